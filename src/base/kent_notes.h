@@ -1,0 +1,20 @@
+/* A list of sentences: cautions, assumptions. kent_notes n = {0}; is a valid, empty
+ * one. */
+#ifndef KENT_NOTES_H
+#define KENT_NOTES_H
+
+#include <stdbool.h>
+#include <stddef.h>
+
+typedef struct kent_notes {
+    char **text; /* [count] */
+    size_t count, capacity;
+    bool failed; /* a note was lost for want of memory */
+} kent_notes;
+
+/* Adds a sentence; one that stands there already is not added again. */
+__attribute__((format(printf, 2, 3))) void kent_notes_add(kent_notes *n,
+                                                          const char *fmt, ...);
+void kent_notes_clear(kent_notes *n);
+
+#endif

@@ -1,0 +1,60 @@
+/* What config/ offers: pipes, materials, valves, soils and sets of design rules, each
+ * row with its source and status. Read by the same strict reader as a case. */
+#ifndef KENT_CATALOGUE_H
+#define KENT_CATALOGUE_H
+
+#include "kent_model.h"
+
+/* Where a row comes from and how far it can be trusted. */
+typedef struct kent_provenance {
+    char source[200];
+    char status[32]; /* "seen", "memory", "derived", "common practice" */
+} kent_provenance;
+
+typedef struct kent_pipe_class {
+    char id[KENT_ID]; /* "DI-EN545-C30-DN600" */
+    char material[KENT_ID];
+    char standard[96];                                   /* "EN 545:2010" */
+    double outside_diameter, wall, wall_minimum, lining; /* m; nominal, minimum */
+    double pressure_rating;                              /* Pa; NAN */
+    kent_provenance from;
+} kent_pipe_class;
+
+typedef struct kent_material {
+    char id[KENT_ID];                            /* "ductile-iron" */
+    double modulus, poisson, density, roughness; /* Pa, -, kg/m3, m */
+    double lining_modulus;                       /* Pa, of its usual lining; 0 */
+    kent_provenance from;
+} kent_material;
+
+typedef struct kent_valve_type {
+    char id[KENT_ID]; /* "butterfly" */
+    kent_valve_curve curve;
+    double loss; /* K fully open; NAN */
+    kent_provenance from;
+} kent_valve_type;
+
+typedef struct kent_catalogue {
+    kent_pipe_class *pipes;
+    size_t pipe_count;
+    kent_material *materials;
+    size_t material_count;
+    kent_valve_type *valves;
+    size_t valve_count;
+    kent_soil *soils; /* their source in kent_soil.source, with status in brackets */
+    size_t soil_count;
+    kent_rules *rules;
+    size_t rule_count;
+} kent_catalogue;
+
+/* From the folder; NULL: KENTLEDGE_CONFIG, else the installed share folder, else the
+ * source tree it was built from. Complaints as for a case. */
+kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
+                                kent_complaints *complaints, kent_error *err);
+void kent_catalogue_free(kent_catalogue *c);
+
+const kent_pipe_class *kent_catalogue_pipe(const kent_catalogue *c, const char *id);
+const kent_material *kent_catalogue_material(const kent_catalogue *c, const char *id);
+const kent_valve_type *kent_catalogue_valve(const kent_catalogue *c, const char *id);
+
+#endif

@@ -1,0 +1,48 @@
+/* The key table: every key a case or a catalogue file may hold, once. The reader, its
+ * error texts, the manual's test and later sweeps and fuzzing walk it. */
+#ifndef KENT_KEYS_H
+#define KENT_KEYS_H
+
+#include "kent_units.h"
+#include <stdbool.h>
+#include <stddef.h>
+
+typedef enum kent_value {
+    KENT_VALUE_QUANTITY, /* a string with a unit of `kind` */
+    KENT_VALUE_NUMBER,   /* a bare number: a ratio, kv, cv */
+    KENT_VALUE_COUNT,    /* a whole number */
+    KENT_VALUE_SWITCH,   /* true or false */
+    KENT_VALUE_TEXT,
+    KENT_VALUE_ID,   /* the name of a thing defined by this key */
+    KENT_VALUE_WORD, /* one of `words`, separated by '|' */
+    KENT_VALUE_LIST, /* a list of groups (named in `words`) or of values */
+    KENT_VALUE_GROUP,
+    KENT_VALUE_STATION, /* "1+198": a length along the main */
+    KENT_VALUE_VECTOR   /* three numbers */
+} kent_value;
+
+typedef struct kent_key {
+    const char *group; /* "case", "point", "pipe", "soil" ... */
+    const char *key;
+    kent_value value;
+    kent_kind kind;       /* of a quantity */
+    double least, most;   /* SI; -INFINITY, INFINITY: no limit */
+    bool above_least;     /* least itself is refused */
+    const char *words;    /* see kent_value */
+    const char *fallback; /* what holds when it is left out; "required"; "none" */
+    const char *since; /* "0.1"; "later": named in the format but not in this version */
+    const char *says;  /* one line for the manual */
+} kent_key;
+
+extern const kent_key KENT_KEYS[];
+extern const size_t KENT_KEY_COUNT;
+
+const kent_key *kent_key_find(const char *group, const char *key);
+
+/* The key of the group nearest to a misspelt one; NULL: none is near. */
+const char *kent_key_nearest(const char *group, const char *key);
+
+/* Spelling variants of one word ("catalog", "vapor", "non-return", "taper") to ours. */
+const char *kent_spelling(const char *word);
+
+#endif

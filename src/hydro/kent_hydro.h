@@ -1,0 +1,11 @@
+/* Everything of hydro/: laws without state. */
+#ifndef KENT_HYDRO_H
+#define KENT_HYDRO_H
+
+#include "kent_friction.h"
+#include "kent_profile.h"
+#include "kent_valve.h"
+#include "kent_water.h"
+#include "kent_wave.h"
+
+#endif

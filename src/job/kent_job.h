@@ -1,0 +1,57 @@
+/* One whole job in memory: model to results. No files, no printing. */
+#ifndef KENT_JOB_H
+#define KENT_JOB_H
+
+#include "kent_restraint.h"
+#include "kent_steady.h"
+
+typedef struct kent_peak {           /* of one point in one scenario */
+    double highest_head, highest_at; /* m, s */
+    double lowest_head, lowest_at;
+} kent_peak;
+
+typedef struct kent_history { /* every watched place of a scenario, thinned */
+    size_t rows, watch_count;
+    double *time;        /* [rows] s */
+    double *head, *flow; /* [rows][watch_count] m, m3/s */
+} kent_history;
+
+typedef struct kent_scenario_result {
+    int scenario;
+    double step; /* s */
+    size_t steps;
+    double uncertainty; /* m: whole difference between the two grids; NAN: one grid */
+    kent_grid *grid;    /* as marched */
+    kent_peak *points;  /* [point_count]; NAN for a point on no span */
+    double **highest, **lowest; /* [span_count][reaches + 1] m */
+    kent_history history;       /* columns: kent_results.history_points */
+    size_t below_vapour;        /* grid points whose head fell below the vapour limit */
+    bool *touched;              /* [point_count] points at or next to one */
+} kent_scenario_result;
+
+typedef struct kent_results {
+    const kent_model *model; /* the caller's; must outlive the results */
+    kent_steady *steady;
+    kent_scenario_result
+        *scenarios; /* [scenario_count], those asked for, in case order */
+    size_t scenario_count;
+    int *history_points; /* [history_count] points whose history is kept */
+    size_t history_count;
+    kent_loads_result *loads;
+    kent_restraints *restraints;
+    kent_notes cautions; /* of the case and the runs */
+    bool
+        limit_exceeded; /* rating, cavitation or a fitting nothing can hold: --strict */
+} kent_results;
+
+typedef struct kent_job_options {
+    const int *scenarios; /* [scenario_count] to run; NULL: all */
+    size_t scenario_count;
+    unsigned threads; /* 0: as many as there are processors */
+} kent_job_options;
+
+kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
+                         kent_results **out, kent_error *err);
+void kent_results_free(kent_results *r);
+
+#endif

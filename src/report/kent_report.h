@@ -1,0 +1,47 @@
+/* Results to text: tables, CSV, JSON, the hand calculation. Writes to a sink; opens no
+ * files. Every function returns KENT_OK or KENT_E_NOMEM / KENT_E_IO. */
+#ifndef KENT_REPORT_H
+#define KENT_REPORT_H
+
+#include "kent_catalogue.h"
+#include "kent_job.h"
+#include <stdio.h>
+
+typedef struct kent_sink {
+    /* 0, or -1 where the text could not be taken */
+    int (*write)(void *to, const char *text, size_t length);
+    void *to;
+} kent_sink;
+
+/* A sink on an open stream. */
+kent_sink kent_sink_stream(FILE *stream);
+
+typedef struct kent_report_options {
+    kent_system units;
+    bool wide;
+} kent_report_options;
+
+/* The two tables on standard output, at most 100 columns wide unless wide. */
+kent_status kent_report_tables(const kent_results *r, const kent_report_options *o,
+                               kent_sink sink);
+kent_status kent_report_summary_csv(const kent_results *r, const kent_report_options *o,
+                                    kent_sink sink);
+kent_status kent_report_json(const kent_results *r, kent_sink sink);
+kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
+                                    kent_sink sink);
+kent_status kent_report_profile_csv(const kent_results *r, size_t scenario,
+                                    kent_sink sink);
+
+/* `check`: what was understood. steady may be NULL where none was found. */
+kent_status kent_report_check(const kent_model *m, const kent_steady *s,
+                              const kent_report_options *o, kent_sink sink);
+
+/* `explain`: one fitting's numbers as a hand calculation. */
+kent_status kent_report_explain(const kent_results *r, int fitting,
+                                const kent_report_options *o, kent_sink sink);
+
+/* `catalogue`: what is NULL or "pipes", "soils", "valves", "rules", "materials". */
+kent_status kent_report_catalogue(const kent_catalogue *c, const char *what,
+                                  const kent_report_options *o, kent_sink sink);
+
+#endif

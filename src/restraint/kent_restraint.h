@@ -1,0 +1,129 @@
+/* What holds a fitting: a bearing block, a gravity block, a base, or a restrained
+ * length on each leg; or the statement that nothing here can, and what would help.
+ *
+ * The plain functions below take numbers and give numbers; kent_restraint_size applies
+ * them, with one set of design rules, to every fitting of a model. */
+#ifndef KENT_RESTRAINT_H
+#define KENT_RESTRAINT_H
+
+#include "kent_derivation.h"
+#include "kent_loads.h"
+
+/* ---- plain functions ----------------------------------------------------------------
+ */
+
+/* Rankine's coefficients of passive and active earth pressure; friction_angle rad. */
+double kent_rankine_passive(double friction_angle);
+double kent_rankine_active(double friction_angle);
+
+/* Passive pressure, Pa: Kp s + 2 c sqrt(Kp), s the effective vertical stress Pa. */
+double kent_passive_pressure(double friction_angle, double cohesion, double stress);
+
+typedef struct kent_face { /* of a bearing block */
+    double width, height;  /* m */
+} kent_face;
+
+/* Least width x height, sides multiples of rules->side_step, that gives area (m2) under
+ * a height of at most `limit` (m) and the rules' width to height; ties to the taller.
+ * Returns false where no face serves. */
+bool kent_face_choose(const kent_rules *rules, double area, double limit,
+                      kent_face *out);
+
+/* m: the greatest height of a face centred on a pipe whose axis lies at depth (m). */
+double kent_face_height_limit(const kent_rules *rules, double axis_depth);
+
+/* m: thickness of a bearing block: least allowed and spread within 45 degrees, rounded
+ * up. */
+double kent_block_thickness(const kent_rules *rules, kent_face face, double diameter);
+
+/* m3 of a gravity block that weighs factor x upward (N). unit_weight N/m3, of concrete,
+ * less water's where it is under the water table. */
+double kent_gravity_volume(double upward, double factor, double unit_weight);
+
+/* Friction and bearing of soil on a metre of pipe, published iron-pipe form. */
+typedef struct kent_soil_grip {
+    double pipe_weight, water_weight; /* N/m */
+    double earth_load; /* N/m, soil prism on the pipe: unit weight x cover x diameter */
+    double friction;   /* N/m, Fs at bends (adhesion on half the perimeter) */
+    double friction_whole; /* N/m, Fs with adhesion on the whole perimeter */
+    double bearing;        /* N/m, Rs */
+} kent_soil_grip;
+
+typedef struct kent_trench {                              /* inputs, all SI */
+    double outside_diameter, cover;                       /* m */
+    double pipe_weight, water_weight;                     /* N/m */
+    double unit_weight;                                   /* N/m3 */
+    double friction_angle, cohesion;                      /* rad, Pa */
+    double friction_ratio, adhesion_ratio, passive_ratio; /* - */
+} kent_trench;
+
+kent_soil_grip kent_soil_grip_of(const kent_trench *t);
+
+/* m, before rounding up to whole pipes. force N is pressure x area (unfactored), angle
+ * rad; friction and bearing N/m; bearing 0 for a crest. */
+double kent_restrained_length_bend(double force, double angle, double factor,
+                                   double friction, double bearing);
+double kent_restrained_length_end(double force, double factor, double friction);
+
+/* ---- every fitting of a model
+ * -------------------------------------------------------- */
+
+typedef enum kent_block_type {
+    KENT_BLOCK_NONE,
+    KENT_BLOCK_BEARING,
+    KENT_BLOCK_GRAVITY, /* with a face for the sideways part */
+    KENT_BLOCK_BASE     /* with a face for the sideways part */
+} kent_block_type;
+
+typedef struct kent_block {
+    kent_block_type type;
+    double bearing_area; /* m2 asked for; of the face, or of the base for a base */
+    double width, height, thickness, volume; /* m, m3; a base: along, across, deep */
+    double bearing_pressure; /* Pa reached on the face or base at the factored load */
+    double utilisation;      /* factored load over resistance */
+    double factor_reached;
+    bool has_face; /* gravity, base: a face takes the sideways part */
+    kent_face face;
+    double face_thickness, face_utilisation;
+} kent_block;
+
+typedef struct kent_leg { /* restrained length of one port */
+    size_t port;          /* 0 .. port_count - 1 */
+    double length;        /* m, as computed */
+    int pipes;            /* whole pipes; 0 where no pipe length is known */
+    bool fits;            /* it ends before the next fitting that breaks it */
+} kent_leg;
+
+typedef struct kent_holding {
+    int governing;    /* index into the fitting's load cases; -1: no thrust at all */
+    kent_sense sense; /* sideways, upward or downward: whichever uses most */
+    int runner_up;    /* the next case; -1 */
+    double runner_up_load;     /* N, its factored load in the same sense */
+    int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
+    kent_restraint_choice chosen;
+    bool held;            /* false: nothing here can hold it, or nothing was asked */
+    bool needs_nothing;   /* within joint deflection, or no thrust */
+    double design_thrust; /* N, factored, of the governing case and sense */
+    double factor_asked, factor_reached, utilisation; /* NAN where not held */
+    kent_block block;
+    kent_leg legs[KENT_PORTS];
+    size_t leg_count;         /* 0: no restrained length can be given */
+    double restrained_length; /* m, longest leg; NAN */
+    kent_notes cautions;      /* of this fitting; says what would help where not held */
+    kent_derivation derivation; /* every step */
+} kent_holding;
+
+typedef struct kent_restraints {
+    kent_holding *fittings; /* [fitting_count] */
+    size_t fitting_count;
+    double concrete; /* m3 in all */
+    size_t not_held;
+} kent_restraints;
+
+kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,
+                                kent_restraints **out, kent_error *err);
+void kent_restraints_free(kent_restraints *r);
+
+const char *kent_block_word(kent_block_type type);
+
+#endif

@@ -1,0 +1,47 @@
+/* Heads and flows at t = 0, with a report of how the solver stopped. */
+#ifndef KENT_STEADY_H
+#define KENT_STEADY_H
+
+#include "kent_model.h"
+
+typedef enum kent_stop {
+    KENT_STOP_CONVERGED,
+    KENT_STOP_STALLED, /* the line search found no better point */
+    KENT_STOP_LIMIT    /* too many iterations */
+} kent_stop;
+
+typedef struct kent_steady_report {
+    kent_stop stop;
+    int iterations;
+    double worst_imbalance; /* m3/s, largest net inflow at a node */
+    int worst_node;         /* where; -1: no free node */
+    double worst_head_gap;  /* m, largest head equation left open */
+    int worst_span;         /* where; -1 */
+} kent_steady_report;
+
+typedef struct kent_steady {
+    char id[KENT_ID];       /* of the state: "normal" */
+    double *node_head;      /* [node_count] m, piezometric */
+    double *span_flow;      /* [span_count] m3/s, positive from node[0] to node[1] */
+    double *valve_flow;     /* [valve_count] m3/s, positive from node[0] */
+    double *valve_capacity; /* [valve_count] m^2.5/s at full opening; found where the
+                               case gives the flow instead */
+    double *outflow;        /* [outflow_count] m3/s drawn */
+    kent_steady_report report;
+} kent_steady;
+
+/* Solves continuity at nodes and energy along spans and valves (docs/theory). Fails
+ * with KENT_E_SOLVE, err->what naming why it stopped, the worst imbalance and its
+ * point; or KENT_E_INPUT where the case itself is impossible (a valve's stated flow
+ * runs uphill). */
+kent_status kent_steady_solve(const kent_model *m, kent_steady **out, kent_error *err);
+void kent_steady_free(kent_steady *s);
+
+/* m: piezometric head at a chainage of a span; a straight line between its ends. */
+double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
+                        double chainage);
+
+/* m: the highest fixed level that a node is connected to with every valve open. */
+double kent_static_level(const kent_model *m, int node);
+
+#endif

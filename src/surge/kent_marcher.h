@@ -1,0 +1,62 @@
+/* The march: the whole network by the method of characteristics, pulled step by step.
+ *
+ * kent_marcher_advance returns a const view of the next instants at the watched places;
+ * it knows no reader. All memory is taken by kent_marcher_new; advancing allocates
+ * nothing, prints nothing and cannot run out of memory. How nodes lie in memory is
+ * known to surge/ alone. Bits do not depend on the instruction set chosen at start. */
+#ifndef KENT_MARCHER_H
+#define KENT_MARCHER_H
+
+#include "kent_grid.h"
+#include "kent_steady.h"
+
+/* A place whose head and flow are wanted at every instant: m from the span's start.
+ * Between grid points both are interpolated linearly at the same instant. */
+typedef struct kent_watch {
+    int span;
+    double chainage;
+} kent_watch;
+
+/* `count` instants after one another. Rows of [watch_count]; valid until the next call.
+ */
+typedef struct kent_trace {
+    size_t count, watch_count;
+    const double *time; /* [count] s */
+    const double *head; /* [count][watch_count] m, piezometric */
+    const double *flow; /* [count][watch_count] m3/s, positive along the span */
+} kent_trace;
+
+typedef struct kent_marcher kent_marcher;
+
+/* scenario -1: no events, duration 0 s of its own. watches are copied. The steady state
+ * is the first instant: the first advance returns t = 0. block: most instants one
+ * advance may return, 1 .. 1024. */
+kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
+                             const kent_grid *grid, int scenario,
+                             const kent_watch *watches, size_t watch_count,
+                             size_t block, kent_marcher **out, kent_error *err);
+void kent_marcher_free(kent_marcher *k);
+
+/* Advances by up to count instants (at most block). Returns how many; they are in
+ * *trace. KENT_E_SOLVE in err where the march had to stop (a span left the stability
+ * limit: place and reaches needed are said); then fewer are returned. */
+size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
+                            kent_error *err);
+
+/* Highest and lowest head so far at every grid point of a span, [reaches + 1] each, m.
+ * Written to arrays of the caller's. */
+void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,
+                           double *lowest);
+
+/* Heads and flows now at every grid point of a span, [reaches + 1] each. For tests. */
+void kent_marcher_profile(const kent_marcher *k, int span, double *head, double *flow);
+
+/* Where the head fell below the vapour limit at any instant: sets touched[point] for
+ * every point at or next to such a grid point, and returns how many grid points did. */
+size_t kent_marcher_below_vapour(const kent_marcher *k, bool *touched);
+
+/* "base", "avx2" or "avx512": the kernel in use. KENTLEDGE_SIMD forces one for tests.
+ */
+const char *kent_marcher_kernel(const kent_marcher *k);
+
+#endif

@@ -1,0 +1,86 @@
+/* Load cases: what each fitting must be held against, and at which instant.
+ *
+ * The recorder is pulled through the march: kent_loads_watches says what to watch,
+ * kent_loads_take reads every instant of a trace. Forces come from one instant's
+ * pressures and flows; maxima taken apart do not make a force. */
+#ifndef KENT_LOADS_H
+#define KENT_LOADS_H
+
+#include "kent_balance.h"
+#include "kent_derivation.h"
+#include "kent_marcher.h"
+
+/* The four ways a thrust can be worst. */
+typedef enum kent_sense {
+    KENT_RESULTANT,
+    KENT_SIDEWAYS,
+    KENT_UPWARD,
+    KENT_DOWNWARD,
+    KENT_SENSES
+} kent_sense;
+
+typedef struct kent_instant {
+    bool set;        /* false: this sense never occurs (never pushes up) */
+    double time;     /* s; NAN outside scenarios */
+    double pressure; /* Pa gauge, at the fitting's centre */
+    kent_balance balance;
+} kent_instant;
+
+typedef struct kent_load_case {
+    char name[KENT_ID];  /* "test", "static", "steady", a scenario's id, "closed from P"
+                          */
+    kent_case_kind kind; /* whose safety factor it takes */
+    int scenario;        /* -1: none */
+    bool given;          /* the one case of a ports-only fitting */
+    double safety_factor;
+    kent_instant worst[KENT_SENSES];
+    double above_90_percent; /* s that the resultant stays above 0.9 of its peak; NAN
+                                outside scenarios */
+} kent_load_case;
+
+typedef struct kent_fitting_loads {
+    kent_load_case *cases; /* [count], in the order of listing */
+    size_t count;
+} kent_fitting_loads;
+
+typedef struct kent_loads_result {
+    kent_fitting_loads *fittings; /* [fitting_count] */
+    size_t fitting_count;
+} kent_loads_result;
+
+typedef struct kent_recorder kent_recorder;
+
+/* For one model and its steady state; pass every scenario through it, in order. */
+kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
+                              kent_recorder **out, kent_error *err);
+void kent_recorder_free(kent_recorder *r);
+
+/* The places this recorder reads: lives as long as it. A trace given to
+ * kent_recorder_take must have these first, in this order (more may follow). */
+const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count);
+
+/* One scenario's slot may be filled from any thread, but only from one at a time.
+ * kent_recorder_start clears the slot: call it before the first take, and again where a
+ * finer grid replaces a coarser one. step: s, of the grid. */
+void kent_recorder_start(kent_recorder *r, int scenario, double step);
+void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace);
+
+/* All load cases of all fittings; *out is the caller's. */
+kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
+                                 kent_error *err);
+void kent_loads_free(kent_loads_result *l);
+
+/* The horizontal size of a thrust, and its azimuth (rad, clockwise from north, 0 .. 2
+ * pi). */
+double kent_thrust_horizontal(kent_vec3 thrust);
+double kent_thrust_azimuth(kent_vec3 thrust);
+
+/* Writes one case's balance as the table of signs and a hand calculation into d: ports,
+ * sum, and the check line for the fitting's type (2 p A sin(angle/2) for a bend ...).
+ */
+
+void kent_loads_derive(const kent_model *m, const kent_fitting *fitting,
+                       const kent_load_case *load, kent_sense sense,
+                       kent_derivation *d);
+
+#endif
