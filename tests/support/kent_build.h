@@ -1,0 +1,95 @@
+/* Small models in memory, in few lines, for the tests of what works on a model.
+ *
+ *     kent_build b = kent_build_new();
+ *     kent_build_point(&b, "R", 0.0, 0.0, 10.0);
+ *     kent_build_point(&b, "E", 1000.0, 0.0, 0.0);
+ *     int p = kent_build_pipe(&b, "A", "R E", 0.5, 1000.0);
+ *     b.model->pipes[p].friction = KENT_FRICTIONLESS;
+ *     kent_build_fixed_level(&b, "R", 100.0);
+ *     int v = kent_build_valve(&b, "V", "E", 0.3, 0.0);
+ *     int s = kent_build_scenario(&b, "shut", 20.0);
+ *     kent_build_ramp(&b, s, KENT_EVENT_VALVE, v, 1.0, 5.0, 0.0);
+ *     kent_build_derive(&b);
+ *     ... b.model ...
+ *     kent_build_clear(&b);
+ *
+ * Every function that adds something returns its index; b.model's arrays may move with
+ * the next addition, so keep indices, not pointers. Whatever goes wrong (an unknown id,
+ * no memory, a complaint of kent_model_derive) fails the running test and says why. */
+#ifndef KENT_BUILD_H
+#define KENT_BUILD_H
+
+#include "kent_model.h"
+
+enum { KENT_BUILD_LISTS = 11 };
+
+typedef struct kent_build {
+    kent_model *model;
+    kent_complaints complaints;        /* of the last derive */
+    size_t capacity[KENT_BUILD_LISTS]; /* of the model's lists */
+} kent_build;
+
+/* An empty model: water of 1000 kg/m3, 2.2e9 Pa, 1.0e-6 m2/s at 288.15 K, gravity
+ * 9.80665 m/s2, barometric 101325 Pa, one file "built.cfg", no ground stated. */
+kent_build kent_build_new(void);
+void kent_build_clear(kent_build *b);
+
+/* x, y NAN: without coordinates. m. Its line in "built.cfg" is its index + 1. */
+int kent_build_point(kent_build *b, const char *id, double x, double y, double z);
+
+/* A push-on pipe through the points named in route ("R P1 E"): bore m, no lining, wall
+ * 10 mm (so outside diameter = bore + 20 mm), frictionless, wave speed given (m/s; NAN:
+ * from the wall, 170 GPa, 0.28), length from coordinates. Change what else is wanted in
+ * b->model->pipes[index]. Its line is 100 + its index. */
+int kent_build_pipe(kent_build *b, const char *id, const char *route, double bore,
+                    double wave_speed);
+
+int kent_build_fixed_level(kent_build *b, const char *at, double level); /* m */
+int kent_build_outflow(kent_build *b, const char *at, double flow);      /* m3/s */
+
+/* Linear characteristic, fully open; capacity m^2.5/s (NAN: set .flow afterwards);
+ * discharge_level m, NAN: in line. Size: 1 m until changed. */
+int kent_build_valve(kent_build *b, const char *id, const char *at, double capacity,
+                     double discharge_level);
+
+int kent_build_scenario(kent_build *b, const char *id, double duration); /* s */
+
+/* An event of the scenario added last: `scenario` must be its index. s, s, and opening
+ * or m3/s. */
+int kent_build_ramp(kent_build *b, int scenario, kent_event_kind kind, int target,
+                    double start_time, double ramp_time, double to);
+
+/* The same by a law of count points after start_time. */
+int kent_build_law(kent_build *b, int scenario, kent_event_kind kind, int target,
+                   double start_time, const kent_law_point *law, size_t count);
+
+/* Horizontal allowable bearing Pa, unit weight N/m3; the rest not stated. Becomes the
+ * ground's with cover m. */
+int kent_build_soil(kent_build *b, const char *id, double allowable_bearing,
+                    double unit_weight, double cover);
+
+/* An empty note on the point's fitting (everything from geometry), to be filled in. */
+int kent_build_note(kent_build *b, const char *at);
+
+/* A ports-only fitting of `type` (-1: from the ports); the ports are copied. */
+int kent_build_ports(kent_build *b, const char *id, int type, const kent_port *ports,
+                     size_t count);
+
+/* A port for kent_build_ports: direction (any length), Pa gauge, m3/s out of the
+ * fitting, inside diameter m; seal diameter the same; momentum factor 1. */
+kent_port kent_build_port(kent_vec3 direction, double pressure, double flow,
+                          double inside_diameter);
+
+/* Derives, and fails the test with the complaints if there are any. */
+void kent_build_derive(kent_build *b);
+
+/* Derives and expects complaints: returns the first one's text (b's). */
+const char *kent_build_complaint(kent_build *b);
+
+/* Derived things by id, failing the test where there is none. */
+int kent_build_span_of(const kent_build *b, const char *id);
+int kent_build_fitting_of(const kent_build *b, const char *id);
+int kent_build_node_of(const kent_build *b,
+                       const char *point); /* the first one there */
+
+#endif
