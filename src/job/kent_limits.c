@@ -1,0 +1,116 @@
+#include "kent_limits.h"
+
+/* A peak in the last 2 % of the duration may not be the last word. */
+static const double LATE_SHARE = 0.02;
+
+/* Pa gauge at a grid point of a span whose head is given. */
+static double pressure_on_span(const kent_model *m, int span, int reaches, int node,
+                               double head)
+{
+    const kent_span *s = &m->spans[span];
+    const double chainage = s->length * (double)node / (double)reaches;
+    return kent_model_pressure(m, head, kent_span_level(m, s, chainage));
+}
+
+/* Highest pressure on a span in one scenario, Pa, and how far along it, m. */
+static double highest_on_span(const kent_results *r, const kent_scenario_result *run,
+                              int span, double *chainage)
+{
+    const kent_model *m = r->model;
+    const int reaches = run->grid->reaches[span];
+    double highest = -INFINITY;
+    for (int n = 0; n <= reaches; n++) {
+        const double p = pressure_on_span(m, span, reaches, n, run->highest[span][n]);
+        if (!(p > highest)) continue;
+        highest = p;
+        *chainage = m->spans[span].length * (double)n / (double)reaches;
+    }
+    return highest;
+}
+
+static void judge_rating(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    for (size_t i = 0; i < m->span_count; i++) {
+        const double rating = m->pipes[m->spans[i].pipe].pressure_rating;
+        double chainage = 0.0;
+        if (!isfinite(rating)) continue;
+        const double reached = highest_on_span(r, run, (int)i, &chainage);
+        if (reached <= rating) continue;
+        kent_notes_add(
+            &r->cautions,
+            "pipe %s: %.2f bar reached %.0f m along it in %s, rated %.2f bar",
+            m->spans[i].id, reached / 1e5, chainage, m->scenarios[run->scenario].id,
+            rating / 1e5);
+        r->limit_exceeded = true;
+    }
+}
+
+static void judge_vapour(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    if (run->below_vapour == 0) return;
+    kent_text where = {0};
+    size_t named = 0;
+    for (size_t i = 0; i < m->point_count; i++) {
+        if (!run->touched[i]) continue;
+        if (named < 6) kent_text_add(&where, named ? ", %s" : "%s", m->points[i].id);
+        named++;
+    }
+    if (named > 6) kent_text_add(&where, " and %zu more", named - 6);
+    kent_notes_add(
+        &r->cautions,
+        "%s: the pressure falls below the vapour limit at or next to %s; this "
+        "version has no cavity model, so pressures after that instant are not to "
+        "be relied on there",
+        m->scenarios[run->scenario].id, kent_text_of(&where));
+    kent_text_clear(&where);
+    r->limit_exceeded = true;
+}
+
+static void judge_lateness(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    const kent_scenario *s = &m->scenarios[run->scenario];
+    const double late = (1.0 - LATE_SHARE) * s->duration;
+    int highest = -1;
+    for (size_t i = 0; i < m->point_count; i++) {
+        if (!isfinite(run->points[i].highest_head)) continue;
+        if (highest < 0 ||
+            run->points[i].highest_head > run->points[highest].highest_head) {
+            highest = (int)i;
+        }
+    }
+    if (highest < 0) return;
+    const kent_peak *peak = &run->points[highest];
+    const double swing = peak->highest_head - peak->lowest_head;
+    if (peak->highest_at < late || swing < 1e-6) return;
+    kent_notes_add(
+        &r->cautions,
+        "%s: the highest head (at %s) comes at %.1f s of %.1f s: run it longer", s->id,
+        m->points[highest].id, peak->highest_at, s->duration);
+}
+
+static void judge_grid(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    for (size_t i = 0; i < m->span_count; i++) {
+        if (!run->grid->misses[i]) continue;
+        kent_notes_add(
+            &r->cautions,
+            "span %s is short for the common step: its wave speed %.0f m/s is "
+            "marched as %.0f m/s (inertia kept)",
+            m->spans[i].id, m->spans[i].wave_speed, run->grid->wave_speed_used[i]);
+    }
+}
+
+void kent_limits_judge(kent_results *r)
+{
+    for (size_t i = 0; i < r->scenario_count; i++) {
+        judge_rating(r, &r->scenarios[i]);
+        judge_vapour(r, &r->scenarios[i]);
+        judge_lateness(r, &r->scenarios[i]);
+        if (i == 0) judge_grid(r, &r->scenarios[i]);
+    }
+    if (r->restraints && r->restraints->not_held > 0) r->limit_exceeded = true;
+}

@@ -1,0 +1,129 @@
+#include "kent_viewpoint.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+/* The first place, in order of spans and then along the route, where a point is met. */
+static bool place_of_point(const kent_model *m, int point, kent_watch *out)
+{
+    for (size_t i = 0; i < m->span_count; i++) {
+        const kent_span *span = &m->spans[i];
+        const size_t first = span->route_first;
+        for (size_t r = first; r < first + span->route_count; r++) {
+            if (m->route[r] != point) continue;
+            *out = (kent_watch){(int)i, m->chainage[r] - m->chainage[first]};
+            return true;
+        }
+    }
+    return false;
+}
+
+/* The end of the first span at a node. */
+static kent_watch place_of_node(const kent_model *m, int node)
+{
+    const kent_end end = m->ends[m->nodes[node].end_first];
+    const double length = m->spans[end.span].length;
+    return (kent_watch){end.span, end.side == 0 ? 0.0 : length};
+}
+
+static int valve_at(const kent_model *m, int point)
+{
+    for (size_t i = 0; i < m->valve_count; i++) {
+        if (m->valves[i].point == point) return (int)i;
+    }
+    return -1;
+}
+
+/* Marks the points whose history is wanted. */
+static void mark_histories(const kent_model *m, bool *wanted)
+{
+    for (size_t i = 0; i < m->point_count; i++)
+        wanted[i] = m->points[i].record;
+    for (size_t i = 0; i < m->fitting_count; i++) {
+        if (m->fittings[i].point >= 0) wanted[m->fittings[i].point] = true;
+    }
+    for (size_t i = 0; i < m->fixed_level_count; i++) {
+        wanted[m->fixed_levels[i].point] = true;
+    }
+    for (size_t i = 0; i < m->outflow_count; i++)
+        wanted[m->outflows[i].point] = true;
+    for (size_t i = 0; i < m->valve_count; i++)
+        wanted[m->valves[i].point] = true;
+}
+
+/* A valve's own flow is positive from its first node: into the valve at a span's end.
+ */
+static double sign_at_valve(const kent_model *m, int valve)
+{
+    return m->ends[m->nodes[m->valves[valve].node[0]].end_first].side == 1 ? 1.0 : -1.0;
+}
+
+static void add_view(kent_viewpoints *v, kent_viewpoint view, kent_watch watch,
+                     bool history)
+{
+    v->watches[v->recorder_count + v->count] = watch;
+    v->views[v->count] = view;
+    if (history && v->history_count < KENT_HISTORY_PLACES) {
+        v->history[v->history_count++] = (int)v->count;
+    } else if (history) {
+        v->history_cut = true;
+    }
+    v->count++;
+}
+
+static void add_point(kent_viewpoints *v, const kent_model *m, int point, bool history)
+{
+    const int valve = valve_at(m, point);
+    kent_watch watch;
+    if (valve < 0) {
+        if (!place_of_point(m, point, &watch)) return; /* on no pipe */
+        add_view(v, (kent_viewpoint){point, 1.0, false}, watch, history);
+        return;
+    }
+    const int *node = m->valves[valve].node;
+    watch = place_of_node(m, node[0]);
+    add_view(v, (kent_viewpoint){point, sign_at_valve(m, valve), false}, watch,
+             history);
+    if (node[1] < 0) return;
+    add_view(v, (kent_viewpoint){point, 1.0, true}, place_of_node(m, node[1]), false);
+}
+
+kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *recorder,
+                                kent_viewpoints **out, kent_error *err)
+{
+    kent_status status = KENT_E_NOMEM;
+    size_t recorder_count = 0;
+    const kent_watch *own = kent_recorder_watches(recorder, &recorder_count);
+    const size_t most = m->point_count + m->valve_count;
+    bool *wanted = kent_alloc(m->point_count, sizeof *wanted);
+    kent_viewpoints *v = kent_alloc(1, sizeof *v);
+    if (!wanted || !v) goto done;
+
+    v->watches = kent_alloc(recorder_count + most, sizeof *v->watches);
+    v->views = kent_alloc(most, sizeof *v->views);
+    v->history = kent_alloc(most, sizeof *v->history);
+    if (!v->watches || !v->views || !v->history) goto done;
+
+    v->recorder_count = recorder_count;
+    if (recorder_count) memcpy(v->watches, own, recorder_count * sizeof *own);
+    mark_histories(m, wanted);
+    for (size_t i = 0; i < m->point_count; i++)
+        add_point(v, m, (int)i, wanted[i]);
+    *out = v;
+    v = NULL;
+    status = KENT_OK;
+done:
+    if (status) (void)kent_error_nomem(err);
+    kent_viewpoints_free(v);
+    free(wanted);
+    return status;
+}
+
+void kent_viewpoints_free(kent_viewpoints *v)
+{
+    if (!v) return;
+    free(v->watches);
+    free(v->views);
+    free(v->history);
+    free(v);
+}

@@ -1,0 +1,78 @@
+"""run_case.py PROGRAM CASE: runs one case and holds its results against expected.csv.
+
+A row of expected.csv is quantity,value,relative,absolute,source. quantity is a path into
+results.json in which elements of a list are named by their id, name, state or index:
+fittings.PI1.block.width_m, scenarios.shut.points.VC.highest_head_m,
+fittings.PI1.thrust_N.0. A value of the form "text:bend" compares words, "null" the absence
+of a value. Met inside either tolerance; NaN never is.
+"""
+import csv
+import json
+import math
+import pathlib
+import subprocess
+import sys
+import tempfile
+
+
+def look_up(node, path):
+    """Follows a path; ids may hold dots, so the longest match wins."""
+    if not path:
+        return node
+    parts = path.split(".")
+    for take in range(len(parts), 0, -1):
+        key, rest = ".".join(parts[:take]), ".".join(parts[take:])
+        if isinstance(node, dict) and key in node:
+            return look_up(node[key], rest)
+        if isinstance(node, list):
+            for item in node:
+                if isinstance(item, dict) and key in (item.get("id"), item.get("name"),
+                                                      item.get("state")):
+                    return look_up(item, rest)
+            if key.isdigit() and int(key) < len(node):
+                return look_up(node[int(key)], rest)
+    raise KeyError(path)
+
+
+def fault(row, results):
+    """What is wrong with one row, or None."""
+    try:
+        got = look_up(results, row["quantity"])
+    except KeyError as missing:
+        return f"{row['quantity']}: not in the results (at {missing})"
+    want = row["value"]
+    if want == "null":
+        met = got is None
+    elif want.startswith("text:"):
+        met = got == want[5:]
+    else:
+        want = float(want)
+        met = isinstance(got, (int, float)) and math.isfinite(got) and (
+            abs(got - want) <= float(row["absolute"] or 0)
+            or abs(got - want) <= float(row["relative"] or 0) * abs(want))
+    return None if met else (f"{row['quantity']}: got {got!r}, expected {row['value']} "
+                             f"({row['source']})")
+
+
+def main(program, case):
+    case = pathlib.Path(case)
+    with open(case.parent / "expected.csv", newline="") as file:
+        rows = list(csv.DictReader(file))
+    if not rows:
+        print("expected.csv is empty")
+        return 1
+    with tempfile.TemporaryDirectory() as folder:
+        out = pathlib.Path(folder) / "results"
+        run = subprocess.run([program, "run", str(case), "--out", str(out), "--quiet"],
+                             capture_output=True, text=True)
+        if run.returncode != 0:
+            print(f"exit status {run.returncode}\n{run.stderr}")
+            return 1
+        results = json.loads((out / "results.json").read_text())
+    faults = [f for f in (fault(row, results) for row in rows) if f]
+    print("\n".join(faults) or f"{len(rows)} quantities as expected")
+    return 1 if faults else 0
+
+
+if __name__ == "__main__":
+    sys.exit(main(*sys.argv[1:]))
