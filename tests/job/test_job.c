@@ -1,0 +1,174 @@
+#include "kent_build.h"
+#include "kent_check.h"
+#include "kent_job.h"
+
+#include <string.h>
+
+/* A gravity main 1 km long from a tank at 60 m to a valve that discharges at 20 m, with
+ * a bend half-way: shut in 2 s and in 20 s. */
+static kent_build main_with_two_closures(void)
+{
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 30.0);
+    kent_build_point(&b, "B", 500.0, 0.0, 25.0);
+    kent_build_point(&b, "E", 900.0, 300.0, 20.0);
+    kent_build_pipe(&b, "A", "R B E", 0.5, 1000.0);
+    kent_build_fixed_level(&b, "R", 60.0);
+    const int valve = kent_build_valve(&b, "V", "E", 0.05, 20.0);
+    const int fast = kent_build_scenario(&b, "fast", 20.0);
+    kent_build_ramp(&b, fast, KENT_EVENT_VALVE, valve, 0.5, 2.0, 0.0);
+    const int slow = kent_build_scenario(&b, "slow", 30.0);
+    kent_build_ramp(&b, slow, KENT_EVENT_VALVE, valve, 0.5, 20.0, 0.0);
+    kent_build_soil(&b, "sand", 150e3, 19e3, 1.5);
+    return b;
+}
+
+static kent_results *run(const kent_build *b, const kent_job_options *options)
+{
+    kent_error err = {0};
+    kent_results *r = NULL;
+    const kent_status status = kent_job_run(b->model, options, &r, &err);
+    if (status) fail_msg("%s: %s", err.where, err.what);
+    return r;
+}
+
+static bool a_caution_holds(const kent_notes *notes, const char *words)
+{
+    for (size_t i = 0; i < notes->count; i++) {
+        if (strstr(notes->text[i], words)) return true;
+    }
+    return false;
+}
+
+static void the_same_bits_come_whatever_the_number_of_threads(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    kent_build_derive(&b);
+    kent_results *one = run(&b, &(kent_job_options){.threads = 1});
+    kent_results *four = run(&b, &(kent_job_options){.threads = 4});
+    assert_int_equal(one->scenario_count, 2);
+    for (size_t s = 0; s < 2; s++) {
+        const kent_scenario_result *x = &one->scenarios[s], *y = &four->scenarios[s];
+        const size_t bytes = b.model->point_count * sizeof *x->points;
+        assert_memory_equal(x->points, y->points, bytes);
+        assert_int_equal(x->history.rows, y->history.rows);
+        assert_memory_equal(x->history.head, y->history.head,
+                            x->history.rows * x->history.watch_count * sizeof(double));
+    }
+    const kent_load_case *x = one->loads->fittings[0].cases;
+    const kent_load_case *y = four->loads->fittings[0].cases;
+    for (size_t c = 0; c < one->loads->fittings[0].count; c++) {
+        assert_memory_equal(&x[c].worst[KENT_RESULTANT].balance.thrust,
+                            &y[c].worst[KENT_RESULTANT].balance.thrust,
+                            sizeof(kent_vec3));
+    }
+    kent_results_free(one);
+    kent_results_free(four);
+    kent_build_clear(&b);
+}
+
+static void a_peak_is_the_highest_of_its_history(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    for (size_t s = 0; s < r->scenario_count; s++) {
+        const kent_history *h = &r->scenarios[s].history;
+        assert_true(h->rows > 100);
+        for (size_t c = 0; c < r->history_count; c++) {
+            double highest = -1e9, lowest = 1e9;
+            for (size_t i = 0; i < h->rows; i++) {
+                highest = fmax(highest, h->head[i * h->watch_count + c]);
+                lowest = fmin(lowest, h->head[i * h->watch_count + c]);
+            }
+            const kent_peak *peak = &r->scenarios[s].points[r->history_points[c]];
+            assert_true(highest == peak->highest_head && lowest == peak->lowest_head);
+        }
+    }
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+static void
+a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    const int end = kent_model_point_index(b.model, "E");
+    const double fast = r->scenarios[0].points[end].highest_head;
+    const double slow = r->scenarios[1].points[end].highest_head;
+    const double speed = r->steady->span_flow[0] / b.model->spans[0].area;
+    const double joukowsky = 1000.0 * speed / b.model->gravity; /* m, a V/g */
+    assert_true(slow > 60.0 && fast > slow);
+    assert_true(fast <= r->steady->node_head[0] + joukowsky + 1e-9);
+    assert_true(r->scenarios[0].uncertainty >= 0.0 &&
+                r->scenarios[0].uncertainty < 1.0);
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+static void a_rating_that_is_passed_is_said_and_sets_the_limit(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    b.model->pipes[0].pressure_rating = 5e5; /* Pa */
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    assert_true(a_caution_holds(&r->cautions, "pipe A"));
+    assert_true(r->limit_exceeded);
+    kent_results_free(r);
+
+    b.model->pipes[0].pressure_rating = 50e5;
+    r = run(&b, &(kent_job_options){.threads = 1});
+    assert_false(a_caution_holds(&r->cautions, "pipe A"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+static void a_peak_at_the_very_end_asks_for_a_longer_run(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    b.model->scenarios[1].duration = 5.0; /* s: the slow valve is still moving */
+    kent_build_derive(&b);
+    const int slow = 1;
+    kent_results *r = run(&b, &(kent_job_options){&slow, 1, 1});
+    assert_int_equal(r->scenario_count, 1);
+    assert_true(a_caution_holds(&r->cautions, "run it longer"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+static void a_sheet_of_ports_runs_without_a_network(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    const kent_port end = kent_build_port((kent_vec3){-1.0, 0.0, 0.0}, 1e6, 0.0, 0.3);
+    kent_build_ports(&b, "CAP", -1, &end, 1);
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    assert_int_equal(r->loads->fittings[0].count, 1);
+    const kent_vec3 thrust =
+        r->loads->fittings[0].cases[0].worst[KENT_RESULTANT].balance.thrust;
+    assert_close(thrust.x, 1e6 * acos(-1.0) / 4.0 * 0.09, 1e-12); /* N, p A */
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(the_same_bits_come_whatever_the_number_of_threads),
+        cmocka_unit_test(a_peak_is_the_highest_of_its_history),
+        cmocka_unit_test(
+            a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky),
+        cmocka_unit_test(a_rating_that_is_passed_is_said_and_sets_the_limit),
+        cmocka_unit_test(a_peak_at_the_very_end_asks_for_a_longer_run),
+        cmocka_unit_test(a_sheet_of_ports_runs_without_a_network),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
