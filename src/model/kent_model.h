@@ -338,8 +338,14 @@ typedef struct kent_fitting {
     kent_place place;
 } kent_fitting;
 
+/* Who draws and checks, printed on sheets and never computed with. Empty: not given. */
+typedef struct kent_project {
+    char number[64], drawing[64], revision[64], designer[64], checker[64];
+} kent_project;
+
 typedef struct kent_model {
     char title[160];
+    kent_project project;
     kent_system units;
     char **files; /* [file_count] names of the input files */
     size_t file_count;
