@@ -1,0 +1,432 @@
+#include "kent_model_internal.h"
+
+#include <assert.h>
+#include <math.h>
+#include <stdio.h>
+
+static const double PI = 3.14159265358979323846;
+static const double WYE_BELOW = 75.0 * 3.14159265358979323846 / 180.0; /* rad */
+static const double FLOW_BALANCE = 1.0e-6; /* of the largest flow, ports-only */
+
+enum { NO_FITTING = -1 };
+
+/* A point with its legs, while it is being looked at. */
+typedef struct kent_site {
+    kent_model *m;
+    int point;
+    kent_device device;
+    const kent_fitting_note *note; /* NULL: nothing said */
+    kent_complaints *complaints;
+    kent_port *ports; /* [count] at most KENT_ARMS are kept */
+    size_t count;
+    bool schematic;    /* some leg has no coordinates */
+    double deflection; /* rad that the joints here take: the least of the legs' */
+    bool rigid;        /* no leg's joint slips */
+} kent_site;
+
+static double degrees(double angle) { return angle * 180.0 / PI; }
+
+/* Which leg counts a type may have. */
+static bool type_fits(kent_fitting_type type, size_t count)
+{
+    switch (type) {
+    case KENT_BEND:
+    case KENT_REDUCER:
+    case KENT_STRAIGHT:
+        return count == 2;
+    case KENT_TEE:
+    case KENT_WYE:
+        return count == 3;
+    case KENT_CROSS:
+        return count >= 4;
+    case KENT_DEAD_END:
+        return count == 1;
+    case KENT_VALVE:
+        return count == 1 || count == 2;
+    }
+    return false;
+}
+
+static kent_restraint_choice usual_restraint(const kent_fitting *f, bool rigid)
+{
+    if (f->within_deflection || f->type == KENT_STRAIGHT) return KENT_NO_RESTRAINT;
+    if (rigid) return KENT_RESTRAINED_JOINTS;
+    return f->type == KENT_REDUCER || f->type == KENT_VALVE ? KENT_ANCHOR_BLOCK
+                                                            : KENT_THRUST_BLOCK;
+}
+
+/* The leg that one arm gives, direction apart. */
+static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm)
+{
+    const kent_pipe *pipe = &m->pipes[l->pipe[arm.stop]];
+    const int number = l->arm_span[kent_arm_number(arm)];
+    const kent_span *span = &m->spans[number];
+    const bool gasketed =
+        pipe->joint == KENT_RESTRAINED || kent_joint_slips(pipe->joint);
+    const double outside = pipe->outside_diameter;
+    const bool start = arm.stop == span->route_first;
+    const bool end = arm.stop == span->route_first + span->route_count - 1;
+
+    return (kent_port){
+        .inside_diameter = pipe->inside_diameter,
+        .seal_diameter =
+            gasketed && isfinite(outside) ? outside : pipe->inside_diameter,
+        .outside_diameter = outside,
+        .momentum_factor = (double)NAN,
+        .span = number,
+        .chainage = m->chainage[arm.stop] - m->chainage[span->route_first],
+        .sign = arm.leaves ? 1.0 : -1.0,
+        .at_end = arm.leaves ? start : end,
+        .toward = kent_arm_toward(m, arm),
+    };
+}
+
+static void read_site(const kent_layout *l, kent_site *site)
+{
+    const kent_model *m = site->m;
+    const kent_vec3 here = m->points[site->point].at;
+    kent_arm arms[KENT_ARMS];
+    bool some_plan = false;
+
+    site->count = kent_layout_arms(m, l, site->point, arms);
+    site->device = l->device[site->point];
+    site->deflection = (double)INFINITY;
+    site->rigid = true;
+    for (size_t i = 0; i < site->count && i < KENT_ARMS; i++) {
+        const kent_pipe *pipe = &m->pipes[l->pipe[arms[i].stop]];
+        kent_port *port = &site->ports[i];
+        *port = port_of(m, l, arms[i]);
+        port->direction =
+            kent_vec3_unit(kent_vec3_sub(m->points[port->toward].at, here));
+        const bool plan = isfinite(kent_vec3_length(port->direction));
+        some_plan |= plan;
+        site->schematic |= !plan;
+        site->deflection = fmin(site->deflection, pipe->joint_deflection);
+        site->rigid &= !kent_joint_slips(pipe->joint);
+        if (site->note && isfinite(site->note->face)) port->face = site->note->face;
+    }
+    if (site->schematic && some_plan && site->count > 1) {
+        kent_notes_add(&site->m->cautions,
+                       "point \"%s\": not every pipe there has coordinates, so none of "
+                       "its angles are taken from them",
+                       m->points[site->point].id);
+    }
+}
+
+/* A branch without coordinates: the one smaller leg, else the pipe listed last. */
+static void put_branch_last(kent_port ports[3])
+{
+    size_t branch = 2;
+    for (size_t i = 0; i < 3; i++) {
+        const kent_port *a = &ports[(i + 1) % 3], *b = &ports[(i + 2) % 3];
+        if (ports[i].inside_diameter < fmin(a->inside_diameter, b->inside_diameter)) {
+            branch = i;
+        }
+    }
+    const kent_port leg = ports[branch];
+    for (size_t i = branch; i < 2; i++)
+        ports[i] = ports[i + 1];
+    ports[2] = leg;
+}
+
+static double branch_angle_of(const kent_site *site)
+{
+    if (!site->schematic) return kent_ports_branch_angle(site->ports);
+    return site->note && isfinite(site->note->angle) ? site->note->angle : 0.5 * PI;
+}
+
+/* Orders the legs of three and more: run first, upstream first. */
+static void order_legs(kent_site *site)
+{
+    if (site->count < 3 || site->count > KENT_ARMS) return;
+    if (!site->schematic) kent_ports_run_first(site->ports, site->count);
+    if (site->schematic && site->count == 3) put_branch_last(site->ports);
+    if (site->ports[0].sign > 0.0 && site->ports[1].sign < 0.0) {
+        const kent_port upstream = site->ports[1];
+        site->ports[1] = site->ports[0];
+        site->ports[0] = upstream;
+    }
+}
+
+/* What geometry and devices make of a point. */
+static int natural_type(const kent_site *site)
+{
+    const kent_device_kind device = site->device.kind;
+    if (device == KENT_DEVICE_VALVE) return KENT_VALVE;
+    if (device == KENT_DEVICE_LEVEL) return NO_FITTING; /* the pipe ends in a tank */
+    if (site->count == 1) {
+        return device == KENT_DEVICE_OUTFLOW ? (int)NO_FITTING : (int)KENT_DEAD_END;
+    }
+    if (site->count == 2) {
+        if (!kent_ports_same_size(&site->ports[0], &site->ports[1])) {
+            return KENT_REDUCER;
+        }
+        const double turn = site->schematic ? (site->note ? site->note->angle : 0.0)
+                                            : kent_ports_turn(site->ports);
+        return turn > KENT_LEAST_TURN ? (int)KENT_BEND
+                                      : (int)NO_FITTING; /* NAN: none */
+    }
+    if (site->count == 3) {
+        return branch_angle_of(site) < WYE_BELOW ? KENT_WYE : KENT_TEE;
+    }
+    return KENT_CROSS;
+}
+
+/* The type after the note's say; NO_FITTING with a complaint where a note cannot be
+ * followed. */
+static int settle_type(const kent_site *site)
+{
+    const kent_model *m = site->m;
+    const kent_fitting_note *note = site->note;
+    const char *id = m->points[site->point].id;
+    int type = natural_type(site);
+
+    if (!note) return type;
+    if (note->type < 0) {
+        if (type == NO_FITTING) {
+            kent_place_complain(
+                m, note->place, site->complaints,
+                "fitting at \"%s\": nothing turns, changes size or ends "
+                "there; state its type (without x and y, a bend's "
+                "angle)",
+                id);
+        }
+        return type;
+    }
+    const kent_fitting_type asked = (kent_fitting_type)note->type;
+    const bool valve_here = site->device.kind == KENT_DEVICE_VALVE;
+    if (valve_here != (asked == KENT_VALVE)) {
+        kent_place_complain(m, note->place, site->complaints,
+                            valve_here ? "fitting at \"%s\": a valve stands there; "
+                                         "leave its type out"
+                                       : "fitting at \"%s\": no valve stands there; "
+                                         "add one to valves",
+                            id);
+        return NO_FITTING;
+    }
+    if (!type_fits(asked, site->count)) {
+        kent_place_complain(m, note->place, site->complaints,
+                            "fitting at \"%s\": %zu leg%s there cannot be a %s; leave "
+                            "its type out, or correct the routes",
+                            id, site->count, site->count == 1 ? "" : "s",
+                            kent_fitting_type_word(asked));
+        return NO_FITTING;
+    }
+    return note->type;
+}
+
+/* Angle and orientation said in a note: directions where there are no coordinates,
+ * else only what agrees with them. Returns false with a complaint. */
+static bool settle_directions(const kent_site *site, kent_fitting_type type)
+{
+    const kent_fitting_note *note = site->note;
+    const bool says_angle = note && isfinite(note->angle);
+    const bool says_way = note && note->orientation >= 0;
+    const bool branches = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
+    const char *wrong = NULL;
+
+    if (!site->schematic) {
+        if (says_angle) {
+            wrong = "angle is for points without x and y: here coordinates give it; "
+                    "leave it out";
+        } else if (says_way) {
+            wrong = "orientation is for points without x and y: here coordinates give "
+                    "it; leave it out";
+        }
+    } else if (type == KENT_BEND && !says_angle) {
+        wrong = "a bend without x and y needs its angle";
+    } else if (says_angle && type != KENT_BEND && !branches) {
+        wrong = "angle belongs to a bend or to a branch; leave it out";
+    } else if (says_way && type != KENT_BEND) {
+        wrong = "orientation belongs to a bend; leave it out";
+    } else if (says_way && note->orientation == KENT_COMBINED) {
+        wrong = "a combined bend needs x and y, or its own ports";
+    }
+    if (wrong) {
+        kent_place_complain(site->m, note ? note->place : (kent_place){-1, 0},
+                            site->complaints, "fitting at \"%s\": %s",
+                            site->m->points[site->point].id, wrong);
+        return false;
+    }
+    if (site->schematic) {
+        const double angle = says_angle ? note->angle : branches ? 0.5 * PI : 0.0;
+        kent_ports_schematic(site->ports, site->count, angle,
+                             says_way ? (kent_orientation)note->orientation
+                                      : KENT_HORIZONTAL);
+    }
+    return true;
+}
+
+/* What the legs themselves say: angle, way, sizes. */
+static void describe_legs(kent_fitting *f, const kent_port *ports)
+{
+    const kent_port *largest = &ports[kent_ports_largest(ports, f->port_count)];
+    f->size = largest->inside_diameter;
+    f->outside_diameter = largest->outside_diameter;
+    f->branch_size = (double)NAN;
+    f->orientation = KENT_HORIZONTAL;
+    if (f->type == KENT_BEND) {
+        f->angle = kent_ports_turn(ports);
+        f->plan_turn = kent_ports_plan_turn(ports);
+        f->orientation = kent_ports_orientation(ports);
+    }
+    if (f->port_count >= 3) {
+        f->angle = kent_ports_branch_angle(ports);
+        f->branch_size = ports[2].inside_diameter;
+    }
+}
+
+static double first_given(double a, double b, double c)
+{
+    return !isnan(a) ? a : !isnan(b) ? b : c;
+}
+
+static void describe_ground(const kent_model *m, const kent_fitting_note *note,
+                            kent_fitting *f)
+{
+    const kent_point *point = f->point >= 0 ? &m->points[f->point] : NULL;
+    const double nan = (double)NAN;
+    f->cover = first_given(note ? note->cover : nan, point ? point->cover : nan,
+                           m->ground.cover);
+    f->water_table =
+        first_given(nan, point ? point->water_table : nan, m->ground.water_table);
+    f->soil = m->ground.soil;
+    if (point && point->soil >= 0) f->soil = point->soil;
+    if (note && note->soil >= 0) f->soil = note->soil;
+    f->weight = note && isfinite(note->weight) ? note->weight : 0.0;
+}
+
+static void caution_turning(const kent_site *site, const kent_fitting *f)
+{
+    if (site->count != 2 || site->schematic || f->type == KENT_BEND) return;
+    const double turn = kent_ports_turn(site->ports);
+    if (turn <= fmax(KENT_LEAST_TURN, site->deflection)) return;
+    kent_notes_add(&site->m->cautions,
+                   "%s at \"%s\" also turns by %.1f deg: its thrust takes that in",
+                   kent_fitting_type_word(f->type), f->id, degrees(turn));
+}
+
+bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
+                     const kent_fitting_note *note, kent_fitting *out, kent_port *ports,
+                     kent_complaints *complaints)
+{
+    kent_site site = {
+        .m = m, .point = point, .note = note, .complaints = complaints, .ports = ports};
+    read_site(l, &site);
+    order_legs(&site);
+    const int type = settle_type(&site);
+    if (type == NO_FITTING) return false;
+    if (site.count > KENT_ARMS) {
+        kent_place_complain(m, m->points[point].place, complaints,
+                            "point \"%s\": %zu legs meet there; a fitting has at most "
+                            "%d, so spread them over several points",
+                            m->points[point].id, site.count, KENT_ARMS);
+        return false;
+    }
+    if (!settle_directions(&site, (kent_fitting_type)type)) return false;
+
+    *out = (kent_fitting){.point = point,
+                          .type = (kent_fitting_type)type,
+                          .at = m->points[point].at,
+                          .station = l->station[point],
+                          .valve = type == KENT_VALVE ? site.device.index : -1,
+                          .port_count = site.count,
+                          .place = note ? note->place : m->points[point].place};
+    (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
+    describe_legs(out, ports);
+    describe_ground(m, note, out);
+    /* A bend named as one is a casting; one found by its small turn is a joint. */
+    out->within_deflection = type == KENT_BEND && !(note && note->type >= 0) &&
+                             !site.schematic && out->angle <= site.deflection;
+    out->restraint = note && note->restraint >= 0
+                         ? (kent_restraint_choice)note->restraint
+                         : usual_restraint(out, site.rigid);
+    caution_turning(&site, out);
+    return true;
+}
+
+/* Copies the legs a case states, with defaults; complains of what cannot be. */
+static bool copy_given(const kent_model *m, const kent_fitting_note *note,
+                       kent_port *ports, kent_complaints *complaints)
+{
+    double net = 0.0, largest = 0.0;
+    if (note->port_count > KENT_ARMS) {
+        kent_place_complain(m, note->place, complaints,
+                            "fitting \"%s\" has %zu ports; at most %d are known",
+                            note->id, note->port_count, KENT_ARMS);
+        return false;
+    }
+    for (size_t i = 0; i < note->port_count; i++) {
+        kent_port *port = &ports[i];
+        *port = m->given_ports[note->port_first + i];
+        port->span = port->toward = -1;
+        port->sign = 1.0;
+        if (!(kent_vec3_length(port->direction) > 0.0)) {
+            kent_place_complain(m, note->place, complaints,
+                                "fitting \"%s\": port %zu has no direction; write for "
+                                "instance direction = [ 1.0, 0.0, 0.0 ]",
+                                note->id, i + 1);
+            return false;
+        }
+        port->direction = kent_vec3_unit(port->direction);
+        port->seal_diameter = first_given(port->seal_diameter, port->outside_diameter,
+                                          port->inside_diameter);
+        net += port->flow;
+        largest = fmax(largest, fabs(port->flow));
+    }
+    if (fabs(net) <= FLOW_BALANCE * largest) return true; /* NaN falls through */
+    kent_place_complain(m, note->place, complaints,
+                        "fitting \"%s\": its flows, positive outwards, add up to %.6g "
+                        "m3/s instead of nothing; what comes in must go out",
+                        note->id, net);
+    return false;
+}
+
+static kent_fitting_type type_of_ports(const kent_port *ports, size_t count)
+{
+    if (count == 1) return KENT_DEAD_END;
+    if (count == 3) {
+        return kent_ports_branch_angle(ports) < WYE_BELOW ? KENT_WYE : KENT_TEE;
+    }
+    if (count > 3) return KENT_CROSS;
+    if (kent_ports_turn(ports) > KENT_LEAST_TURN) return KENT_BEND;
+    return kent_ports_same_size(&ports[0], &ports[1]) ? KENT_STRAIGHT : KENT_REDUCER;
+}
+
+bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
+                             kent_fitting *out, kent_port *ports,
+                             kent_complaints *complaints)
+{
+    if (note->point >= 0) {
+        kent_place_complain(m, note->place, complaints,
+                            "fitting \"%s\" has both at and ports; keep one of them",
+                            note->id);
+        return false;
+    }
+    if (!copy_given(m, note, ports, complaints)) return false;
+    if (note->port_count >= 3) kent_ports_run_first(ports, note->port_count);
+    const kent_fitting_type type = note->type >= 0
+                                       ? (kent_fitting_type)note->type
+                                       : type_of_ports(ports, note->port_count);
+    if (!type_fits(type, note->port_count)) {
+        kent_place_complain(m, note->place, complaints,
+                            "fitting \"%s\": a %s does not have %zu port%s", note->id,
+                            kent_fitting_type_word(type), note->port_count,
+                            note->port_count == 1 ? "" : "s");
+        return false;
+    }
+    const double nan = (double)NAN;
+    *out = (kent_fitting){.point = -1,
+                          .type = type,
+                          .at = {nan, nan, nan},
+                          .station = nan,
+                          .valve = -1,
+                          .port_count = note->port_count,
+                          .place = note->place};
+    (void)snprintf(out->id, sizeof out->id, "%s", note->id);
+    describe_legs(out, ports);
+    describe_ground(m, note, out);
+    out->restraint = note->restraint >= 0 ? (kent_restraint_choice)note->restraint
+                                          : usual_restraint(out, false);
+    return true;
+}

@@ -1,0 +1,91 @@
+#include "kent_model_internal.h"
+
+#include <stdlib.h>
+
+/* The note on each point, [point_count] indices, -1: none; complains of notes that
+ * belong nowhere. */
+static void sort_notes(const kent_model *m, const kent_layout *l, int *note_of,
+                       kent_complaints *complaints)
+{
+    for (size_t p = 0; p < m->point_count; p++)
+        note_of[p] = -1;
+    for (size_t i = 0; i < m->note_count; i++) {
+        const kent_fitting_note *note = &m->notes[i];
+        if (note->port_count > 0) continue;
+        if (note->point < 0) {
+            kent_place_complain(m, note->place, complaints,
+                                "fitting \"%s\" has neither at nor ports; name its "
+                                "point, or state its ports",
+                                note->id);
+        } else if (l->first[note->point + 1] == l->first[note->point]) {
+            kent_place_complain(m, note->place, complaints,
+                                "fitting at \"%s\": no pipe runs through this point; "
+                                "name a point of a pipe's route",
+                                m->points[note->point].id);
+        } else if (note_of[note->point] >= 0) {
+            kent_place_complain(m, note->place, complaints,
+                                "fitting at \"%s\" stands in the list twice; one "
+                                "fitting per point",
+                                m->points[note->point].id);
+        } else {
+            note_of[note->point] = (int)i;
+        }
+    }
+}
+
+/* Room for one more fitting with as many ports as one can have. */
+static kent_status make_room(kent_model *m, size_t *fittings, size_t *ports)
+{
+    void *grown = m->fittings;
+    if (kent_grow(&grown, fittings, m->fitting_count + 1, sizeof *m->fittings) != 0) {
+        return KENT_E_NOMEM;
+    }
+    m->fittings = grown;
+    grown = m->ports;
+    if (kent_grow(&grown, ports, m->port_count + KENT_ARMS, sizeof *m->ports) != 0) {
+        return KENT_E_NOMEM;
+    }
+    m->ports = grown;
+    return KENT_OK;
+}
+
+static void keep_last(kent_model *m)
+{
+    kent_fitting *f = &m->fittings[m->fitting_count++];
+    f->port_first = m->port_count;
+    m->port_count += f->port_count;
+}
+
+kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
+                              kent_complaints *complaints)
+{
+    kent_status status = KENT_E_NOMEM;
+    size_t fittings = 0, ports = 0; /* capacities */
+    int *note_of = kent_alloc(m->point_count, sizeof *note_of);
+
+    if (!note_of) goto done;
+    sort_notes(m, l, note_of, complaints);
+    for (size_t stop = 0; stop < m->route_count; stop++) {
+        const int point = m->route[stop];
+        if (l->stop[l->first[point]] != stop) continue; /* seen already */
+        if (make_room(m, &fittings, &ports) != KENT_OK) goto done;
+        const kent_fitting_note *note =
+            note_of[point] >= 0 ? &m->notes[note_of[point]] : NULL;
+        if (kent_fitting_at(m, l, point, note, &m->fittings[m->fitting_count],
+                            &m->ports[m->port_count], complaints)) {
+            keep_last(m);
+        }
+    }
+    for (size_t i = 0; i < m->note_count; i++) {
+        if (m->notes[i].port_count == 0) continue;
+        if (make_room(m, &fittings, &ports) != KENT_OK) goto done;
+        if (kent_fitting_from_ports(m, &m->notes[i], &m->fittings[m->fitting_count],
+                                    &m->ports[m->port_count], complaints)) {
+            keep_last(m);
+        }
+    }
+    status = KENT_OK;
+done:
+    free(note_of);
+    return status;
+}

@@ -1,0 +1,108 @@
+/* How the derived part of a model is worked out: known to model/ alone.
+ *
+ * A *stop* is one entry of kent_model.route, by its index: a point as one pipe passes
+ * or ends there. An *arm* is a stop seen in one direction along its route; at a point,
+ * arms are what legs of a fitting and ends of spans are made from. Arm 2s looks back
+ * from stop s, arm 2s + 1 looks on. */
+#ifndef KENT_MODEL_INTERNAL_H
+#define KENT_MODEL_INTERNAL_H
+
+#include "kent_model.h"
+
+enum { KENT_ARMS = 8 }; /* most legs of one fitting */
+
+typedef enum kent_device_kind {
+    KENT_NO_DEVICE,
+    KENT_DEVICE_LEVEL,
+    KENT_DEVICE_OUTFLOW,
+    KENT_DEVICE_VALVE
+} kent_device_kind;
+
+typedef struct kent_device {
+    kent_device_kind kind;
+    int index; /* into the model's list of its kind */
+} kent_device;
+
+typedef struct kent_arm {
+    size_t stop;
+    bool leaves; /* looks on along the route: flow along the pipe goes away here */
+} kent_arm;
+
+/* Who meets where. kent_layout l = {0}; is a valid, empty one. */
+typedef struct kent_layout {
+    size_t *first;       /* [point_count + 1] into stop */
+    size_t *stop;        /* [route_count] stops grouped by point, rising */
+    int *pipe;           /* [route_count] of each stop */
+    kent_device *device; /* [point_count] */
+    double *station;     /* [point_count] m; NAN: on no route */
+    int *arm_node;       /* [2 route_count] -1: the pipe isn't cut there */
+    int *arm_span;       /* [2 route_count] -1: no such arm */
+} kent_layout;
+
+/* kent_layout.c */
+kent_status kent_layout_make(const kent_model *m, kent_layout *l);
+void kent_layout_clear(kent_layout *l);
+/* Writes the first KENT_ARMS arms of a point and returns how many it has. Two arms come
+ * as flow along the routes would: the arriving one first, where just one arrives. */
+size_t kent_layout_arms(const kent_model *m, const kent_layout *l, int point,
+                        kent_arm arms[KENT_ARMS]);
+bool kent_layout_is_cut(const kent_model *m, const kent_layout *l, size_t stop);
+/* Notes which device stands at each point; complains where one cannot. */
+void kent_layout_place_devices(const kent_model *m, kent_layout *l,
+                               kent_complaints *complaints);
+int kent_arm_toward(const kent_model *m, kent_arm arm); /* the next point that way */
+
+static inline size_t kent_arm_number(kent_arm arm)
+{
+    return 2 * arm.stop + (arm.leaves ? 1U : 0U);
+}
+
+/* kent_route.c: both need every stop's pipe; the second needs the first. */
+kent_status kent_route_measure(kent_model *m, kent_complaints *complaints);
+void kent_route_stations(const kent_model *m, const kent_layout *l);
+
+/* kent_network.c: spans, nodes, ends; then what no fixed level reaches. */
+kent_status kent_network_cut(kent_model *m, kent_layout *l,
+                             kent_complaints *complaints);
+kent_status kent_network_check_connected(const kent_model *m,
+                                         kent_complaints *complaints);
+
+/* kent_span.c: bore, friction, wave speed and share of losses from its pipe. */
+void kent_span_fill(const kent_model *m, kent_span *span);
+
+/* kent_port.c: geometry of legs, by their directions and diameters alone. */
+double kent_ports_turn(const kent_port ports[2]);      /* rad, 0: straight on */
+double kent_ports_plan_turn(const kent_port ports[2]); /* rad, + to the left */
+kent_orientation kent_ports_orientation(const kent_port ports[2]);
+double kent_ports_branch_angle(const kent_port ports[3]); /* rad, to the nearer run */
+/* Brings the two most nearly opposite legs to the front, keeping the order otherwise.
+ */
+void kent_ports_run_first(kent_port *ports, size_t count);
+bool kent_ports_same_size(const kent_port *a, const kent_port *b);
+size_t kent_ports_largest(const kent_port *ports, size_t count);
+/* Directions where there are no coordinates: flow arrives along +x through port 0. */
+void kent_ports_schematic(kent_port *ports, size_t count, double angle,
+                          kent_orientation orientation);
+
+/* Turns below this are how a survey was rounded, not a fitting. rad: 0.5 degrees */
+static const double KENT_LEAST_TURN = 0.5 * 3.14159265358979323846 / 180.0;
+
+/* kent_fitting.c: one fitting. Returns false where the point carries none; fitting and
+ * ports (at most KENT_ARMS, out->port_count) are then not written. */
+bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
+                     const kent_fitting_note *note, kent_fitting *out, kent_port *ports,
+                     kent_complaints *complaints);
+bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
+                             kent_fitting *out, kent_port *ports,
+                             kent_complaints *complaints);
+
+/* kent_fitting_list.c: all of them, in the order of kent_model.fittings. */
+kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
+                              kent_complaints *complaints);
+
+/* A complaint about what stands at place. */
+__attribute__((format(printf, 4, 5))) void
+kent_place_complain(const kent_model *m, kent_place place, kent_complaints *complaints,
+                    const char *fmt, ...);
+
+#endif

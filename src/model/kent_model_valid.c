@@ -1,0 +1,185 @@
+#include "kent_model.h"
+
+#include <math.h>
+#include <stdlib.h>
+
+static bool is_positive(double x) { return x > 0.0 && isfinite(x); }
+
+static bool is_index(int i, size_t count) { return i >= 0 && (size_t)i < count; }
+
+static bool is_index_or_none(int i, size_t count)
+{
+    return i == -1 || is_index(i, count);
+}
+
+static bool is_part(size_t first, size_t count, size_t whole)
+{
+    return first <= whole && count <= whole - first;
+}
+
+static bool pipes_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->route_count; i++) {
+        if (!is_index(m->route[i], m->point_count)) return false;
+    }
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        const kent_pipe *p = &m->pipes[i];
+        if (p->route_count < 2 ||
+            !is_part(p->route_first, p->route_count, m->route_count) ||
+            !is_positive(p->inside_diameter) || !(p->loss >= 0.0) ||
+            !(p->joint_deflection >= 0.0) || !(p->friction_coefficient >= 0.0)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->point_count; i++) {
+        if (!isfinite(m->points[i].at.z) ||
+            !is_index_or_none(m->points[i].soil, m->soil_count)) {
+            return false;
+        }
+    }
+    return true;
+}
+
+static bool devices_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->fixed_level_count; i++) {
+        const kent_fixed_level *f = &m->fixed_levels[i];
+        if (!is_index(f->point, m->point_count) || !is_index(f->node, m->node_count) ||
+            !isfinite(f->level) || !(f->loss >= 0.0)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->outflow_count; i++) {
+        const kent_outflow *o = &m->outflows[i];
+        if (!is_index(o->point, m->point_count) || !is_index(o->node, m->node_count) ||
+            !isfinite(o->flow) ||
+            (o->pressure_dependent && !is_positive(o->full_pressure))) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_valve *v = &m->valves[i];
+        const bool in_line = isnan(v->discharge_level);
+        if (!is_index(v->point, m->point_count) ||
+            !is_index(v->node[0], m->node_count) ||
+            (in_line ? !is_index(v->node[1], m->node_count) : v->node[1] != -1) ||
+            !is_positive(v->size) || !(v->opening >= 0.0 && v->opening <= 1.0) ||
+            (isnan(v->capacity) ? isnan(v->flow) : !is_positive(v->capacity))) {
+            return false;
+        }
+    }
+    return true;
+}
+
+static bool scenarios_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->scenario_count; i++) {
+        const kent_scenario *s = &m->scenarios[i];
+        if (!is_positive(s->duration) ||
+            !is_part(s->event_first, s->event_count, m->event_count)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->event_count; i++) {
+        const kent_event *e = &m->events[i];
+        const size_t targets =
+            e->kind == KENT_EVENT_VALVE ? m->valve_count : m->outflow_count;
+        if (!is_index(e->target, targets) || !(e->start_time >= 0.0) ||
+            !is_part(e->law_first, e->law_count, m->law_count) ||
+            (e->law_count == 0 && !(e->ramp_time >= 0.0 && isfinite(e->to)))) {
+            return false;
+        }
+    }
+    return true;
+}
+
+static bool spans_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->span_count; i++) {
+        const kent_span *s = &m->spans[i];
+        if (!is_index(s->pipe, m->pipe_count) || s->route_count < 2 ||
+            !is_part(s->route_first, s->route_count, m->route_count) ||
+            !is_index(s->node[0], m->node_count) ||
+            !is_index(s->node[1], m->node_count) || !is_positive(s->length) ||
+            !is_positive(s->bore) || !is_positive(s->area) ||
+            !is_positive(s->wave_speed) || !(s->loss >= 0.0) ||
+            !is_positive(s->friction.bore) || !is_positive(s->friction.gravity) ||
+            !is_positive(s->friction.kinematic_viscosity)) {
+            return false;
+        }
+        for (int side = 0; side < 2; side++) {
+            const size_t stop = s->route_first + (side ? s->route_count - 1 : 0);
+            if (m->nodes[s->node[side]].point != m->route[stop]) return false;
+        }
+    }
+    return true;
+}
+
+/* Every end of every span in just one node's list, and there with good reason. */
+static bool nodes_are_valid(const kent_model *m)
+{
+    size_t ends = 0;
+    for (size_t n = 0; n < m->node_count; n++) {
+        const kent_node *node = &m->nodes[n];
+        if (!is_index(node->point, m->point_count) || node->end_count == 0 ||
+            node->end_first != ends ||
+            !is_part(node->end_first, node->end_count, 2 * m->span_count) ||
+            (node->kind == KENT_NODE_JUNCTION) != (node->device == -1)) {
+            return false;
+        }
+        for (size_t e = 0; e < node->end_count; e++) {
+            const kent_end end = m->ends[node->end_first + e];
+            if (!is_index(end.span, m->span_count) ||
+                (end.side != 0 && end.side != 1) ||
+                m->spans[end.span].node[end.side] != (int)n) {
+                return false;
+            }
+        }
+        ends += node->end_count;
+    }
+    return ends == 2 * m->span_count;
+}
+
+static bool port_is_valid(const kent_model *m, const kent_port *p)
+{
+    const double rounding = 1.0e-9;
+    if (!(fabs(kent_vec3_length(p->direction) - 1.0) < rounding) ||
+        !is_positive(p->inside_diameter) || !is_positive(p->seal_diameter) ||
+        !(p->face >= 0.0)) {
+        return false;
+    }
+    if (p->span == -1) return isfinite(p->pressure + p->flow);
+    if (!is_index(p->span, m->span_count)) return false;
+    const kent_span *span = &m->spans[p->span];
+    return p->chainage >= 0.0 && p->chainage <= span->length &&
+           fabs(p->sign) - 1.0 == 0.0 && is_index(p->toward, m->point_count);
+}
+
+static bool fittings_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->fitting_count; i++) {
+        const kent_fitting *f = &m->fittings[i];
+        if (!is_index_or_none(f->point, m->point_count) ||
+            !is_index_or_none(f->soil, m->soil_count) ||
+            !is_index_or_none(f->valve, m->valve_count) || f->port_count == 0 ||
+            !is_part(f->port_first, f->port_count, m->port_count) ||
+            !isfinite(f->angle + f->weight)) {
+            return false;
+        }
+        for (size_t k = 0; k < f->port_count; k++) {
+            if (!port_is_valid(m, &m->ports[f->port_first + k])) return false;
+        }
+    }
+    return true;
+}
+
+bool kent_model_is_valid(const kent_model *m)
+{
+    return is_positive(m->water.density) && is_positive(m->water.bulk_modulus) &&
+           is_positive(m->water.viscosity) && is_positive(m->gravity) &&
+           is_positive(m->barometric) &&
+           is_index_or_none(m->ground.soil, m->soil_count) &&
+           is_index_or_none(m->loads.test_gauge, m->point_count) &&
+           pipes_are_valid(m) && devices_are_valid(m) && scenarios_are_valid(m) &&
+           spans_are_valid(m) && nodes_are_valid(m) && fittings_are_valid(m);
+}

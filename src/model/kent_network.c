@@ -1,0 +1,251 @@
+#include "kent_model_internal.h"
+
+#include <assert.h>
+#include <stdio.h>
+#include <stdlib.h>
+
+enum { NAMED_POINTS = 5 }; /* of a part cut off, in a complaint */
+
+static bool is_first_at_point(const kent_layout *l, const kent_model *m, size_t stop)
+{
+    return l->stop[l->first[m->route[stop]]] == stop;
+}
+
+static bool is_in_line(const kent_model *m, kent_device device)
+{
+    return device.kind == KENT_DEVICE_VALVE &&
+           isnan(m->valves[device.index].discharge_level);
+}
+
+static kent_node_kind node_kind(kent_device_kind kind)
+{
+    switch (kind) {
+    case KENT_NO_DEVICE:
+        return KENT_NODE_JUNCTION;
+    case KENT_DEVICE_LEVEL:
+        return KENT_NODE_FIXED_LEVEL;
+    case KENT_DEVICE_OUTFLOW:
+        return KENT_NODE_OUTFLOW;
+    case KENT_DEVICE_VALVE:
+        return KENT_NODE_VALVE;
+    }
+    return KENT_NODE_JUNCTION;
+}
+
+static int add_node(kent_model *m, int point, kent_device device)
+{
+    m->nodes[m->node_count] =
+        (kent_node){.point = point,
+                    .kind = node_kind(device.kind),
+                    .device = device.kind == KENT_NO_DEVICE ? -1 : device.index};
+    return (int)m->node_count++;
+}
+
+/* Every arm of a point ends at one node. */
+static void join_arms(kent_layout *l, int point, int node)
+{
+    for (size_t i = l->first[point]; i < l->first[point + 1]; i++) {
+        l->arm_node[2 * l->stop[i]] = node;
+        l->arm_node[2 * l->stop[i] + 1] = node;
+    }
+}
+
+static void make_nodes_at(kent_model *m, kent_layout *l, int point)
+{
+    const kent_device device = l->device[point];
+    const int node = add_node(m, point, device);
+
+    join_arms(l, point, node);
+    switch (device.kind) {
+    case KENT_NO_DEVICE:
+        break;
+    case KENT_DEVICE_LEVEL:
+        m->fixed_levels[device.index].node = node;
+        break;
+    case KENT_DEVICE_OUTFLOW:
+        m->outflows[device.index].node = node;
+        break;
+    case KENT_DEVICE_VALVE:
+        m->valves[device.index].node[0] = node;
+        m->valves[device.index].node[1] = -1;
+        if (is_in_line(m, device)) {
+            kent_arm arms[KENT_ARMS];
+            const size_t count = kent_layout_arms(m, l, point, arms);
+            assert(count == 2); /* kent_layout_place_devices saw to it */
+            (void)count;
+            const int beyond = add_node(m, point, device);
+            l->arm_node[kent_arm_number(arms[1])] = beyond;
+            m->valves[device.index].node[1] = beyond;
+        }
+        break;
+    }
+}
+
+/* Cuts one pipe's route into its spans. */
+static void cut_pipe(kent_model *m, kent_layout *l, int index,
+                     kent_complaints *complaints)
+{
+    const kent_pipe *pipe = &m->pipes[index];
+    const size_t end = pipe->route_first + pipe->route_count;
+    const size_t before = m->span_count;
+    size_t from = pipe->route_first;
+
+    for (size_t stop = from + 1; stop < end; stop++) {
+        if (!kent_layout_is_cut(m, l, stop)) continue;
+        const int number = (int)m->span_count;
+        kent_span *span = &m->spans[m->span_count++];
+        *span = (kent_span){
+            .pipe = index,
+            .node = {l->arm_node[2 * from + 1], l->arm_node[2 * stop]},
+            .route_first = from,
+            .route_count = stop - from + 1,
+        };
+        for (size_t s = from; s < stop; s++) {
+            l->arm_span[2 * s + 1] = l->arm_span[2 * (s + 1)] = number;
+        }
+        kent_span_fill(m, span);
+        from = stop;
+    }
+    const size_t parts = m->span_count - before;
+    for (size_t i = 0; i < parts; i++) {
+        kent_span *span = &m->spans[before + i];
+        const int length =
+            parts == 1 ? snprintf(span->id, sizeof span->id, "%s", pipe->id)
+                       : snprintf(span->id, sizeof span->id, "%s.%zu", pipe->id, i + 1);
+        if (length < (int)sizeof span->id) continue;
+        kent_place_complain(m, pipe->place, complaints,
+                            "pipe \"%s\" is cut into %zu spans and its id is too long "
+                            "to number them; use a shorter one",
+                            pipe->id, parts);
+        return;
+    }
+}
+
+/* Ends grouped by node, in the order of spans. */
+static void group_ends(kent_model *m)
+{
+    for (size_t i = 0; i < m->span_count; i++) {
+        for (int side = 0; side < 2; side++) {
+            m->nodes[m->spans[i].node[side]].end_count++;
+        }
+    }
+    size_t next = 0;
+    for (size_t n = 0; n < m->node_count; n++) {
+        m->nodes[n].end_first = next;
+        next += m->nodes[n].end_count;
+        m->nodes[n].end_count = 0; /* counted up again while filling */
+    }
+    for (size_t i = 0; i < m->span_count; i++) {
+        for (int side = 0; side < 2; side++) {
+            kent_node *node = &m->nodes[m->spans[i].node[side]];
+            m->ends[node->end_first + node->end_count++] = (kent_end){(int)i, side};
+        }
+    }
+}
+
+kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *complaints)
+{
+    /* At most one span for each stop after a route's first, and two nodes a stop. */
+    m->spans = kent_alloc(m->route_count, sizeof *m->spans);
+    m->ends = kent_alloc(m->route_count, 2 * sizeof *m->ends);
+    m->nodes = kent_alloc(m->route_count, 2 * sizeof *m->nodes);
+    if (!m->spans || !m->ends || !m->nodes) return KENT_E_NOMEM;
+
+    for (size_t stop = 0; stop < m->route_count; stop++) {
+        if (is_first_at_point(l, m, stop) && kent_layout_is_cut(m, l, stop)) {
+            make_nodes_at(m, l, m->route[stop]);
+        }
+    }
+    for (size_t i = 0; i < m->pipe_count; i++)
+        cut_pipe(m, l, (int)i, complaints);
+    group_ends(m);
+    return KENT_OK;
+}
+
+/* The node across a valve that is at least partly open; -1: none. */
+static int across_valve(const kent_model *m, size_t node)
+{
+    if (m->nodes[node].kind != KENT_NODE_VALVE) return -1;
+    const kent_valve *valve = &m->valves[m->nodes[node].device];
+    if (valve->node[1] < 0 || !(valve->opening > 0.0)) return -1;
+    return valve->node[valve->node[0] == (int)node ? 1 : 0];
+}
+
+/* Gives every node reached from start the number `part`, listing them in queue; returns
+ * how many there are. */
+static size_t reach(const kent_model *m, int start, int part, int *part_of, int *queue)
+{
+    size_t count = 0;
+    queue[count++] = start;
+    part_of[start] = part;
+    for (size_t head = 0; head < count; head++) {
+        const kent_node *node = &m->nodes[queue[head]];
+        for (size_t e = 0; e < node->end_count; e++) {
+            const kent_end end = m->ends[node->end_first + e];
+            const int other = m->spans[end.span].node[1 - end.side];
+            if (part_of[other] >= 0) continue;
+            part_of[other] = part;
+            queue[count++] = other;
+        }
+        const int other = across_valve(m, (size_t)queue[head]);
+        if (other < 0 || part_of[other] >= 0) continue;
+        part_of[other] = part;
+        queue[count++] = other;
+    }
+    return count;
+}
+
+static void complain_cut_off(const kent_model *m, const int *nodes, size_t count,
+                             kent_complaints *complaints)
+{
+    char named[NAMED_POINTS * (KENT_ID + 4)] = "";
+    size_t used = 0;
+    for (size_t i = 0; i < count && i < NAMED_POINTS; i++) {
+        const int n =
+            snprintf(named + used, sizeof named - used, "%s\"%s\"", i == 0 ? "" : ", ",
+                     m->points[m->nodes[nodes[i]].point].id);
+        used += (size_t)n; /* fits: NAMED_POINTS ids and their separators do */
+    }
+    const kent_end end = m->ends[m->nodes[nodes[0]].end_first];
+    const kent_pipe *pipe = &m->pipes[m->spans[end.span].pipe];
+    kent_place_complain(m, pipe->place, complaints,
+                        "pipe \"%s\": no fixed level reaches %zu point%s: %s%s; add a "
+                        "fixed level there, or open the valve that cuts them off",
+                        pipe->id, count, count == 1 ? "" : "s", named,
+                        count > NAMED_POINTS ? " ..." : "");
+}
+
+kent_status kent_network_check_connected(const kent_model *m,
+                                         kent_complaints *complaints)
+{
+    kent_status status = KENT_E_NOMEM;
+    int *part_of = NULL, *queue = NULL;
+
+    if (m->span_count == 0) return KENT_OK;
+    if (m->fixed_level_count == 0) {
+        kent_place_complain(m, m->pipes[0].place, complaints,
+                            "no fixed level: heads are not determined; add one to "
+                            "fixed_levels, such as the service reservoir's");
+        return KENT_OK;
+    }
+    part_of = kent_alloc(m->node_count, sizeof *part_of);
+    queue = kent_alloc(m->node_count, sizeof *queue);
+    if (!part_of || !queue) goto done;
+
+    for (size_t n = 0; n < m->node_count; n++)
+        part_of[n] = -1;
+    for (size_t n = 0; n < m->node_count; n++) {
+        if (part_of[n] >= 0) continue;
+        const size_t count = reach(m, (int)n, (int)n, part_of, queue);
+        bool has_level = false;
+        for (size_t i = 0; i < count; i++) {
+            has_level |= m->nodes[queue[i]].kind == KENT_NODE_FIXED_LEVEL;
+        }
+        if (!has_level) complain_cut_off(m, queue, count, complaints);
+    }
+    status = KENT_OK;
+done:
+    free(part_of);
+    free(queue);
+    return status;
+}

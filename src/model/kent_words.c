@@ -1,0 +1,74 @@
+#include "kent_model.h"
+
+/* Words of the case file and of results, one list for each enumeration. */
+#define FITTING_TYPES(X)                                                               \
+    X(KENT_BEND, "bend")                                                               \
+    X(KENT_TEE, "tee")                                                                 \
+    X(KENT_WYE, "wye")                                                                 \
+    X(KENT_CROSS, "cross")                                                             \
+    X(KENT_REDUCER, "reducer")                                                         \
+    X(KENT_DEAD_END, "dead-end")                                                       \
+    X(KENT_VALVE, "valve")                                                             \
+    X(KENT_STRAIGHT, "straight")
+
+#define ORIENTATIONS(X)                                                                \
+    X(KENT_HORIZONTAL, "horizontal")                                                   \
+    X(KENT_CREST, "crest")                                                             \
+    X(KENT_SAG, "sag")                                                                 \
+    X(KENT_COMBINED, "combined")
+
+#define JOINTS(X)                                                                      \
+    X(KENT_PUSH_ON, "push-on")                                                         \
+    X(KENT_MECHANICAL, "mechanical")                                                   \
+    X(KENT_FLANGED, "flanged")                                                         \
+    X(KENT_WELDED, "welded")                                                           \
+    X(KENT_FUSED, "fused")                                                             \
+    X(KENT_RESTRAINED, "restrained")
+
+#define CLASSES(X)                                                                     \
+    X(KENT_RECURRING, "recurring")                                                     \
+    X(KENT_OCCASIONAL, "occasional")                                                   \
+    X(KENT_EXCEPTIONAL, "exceptional")
+
+#define RESTRAINTS(X)                                                                  \
+    X(KENT_THRUST_BLOCK, "thrust-block")                                               \
+    X(KENT_ANCHOR_BLOCK, "anchor-block")                                               \
+    X(KENT_RESTRAINED_JOINTS, "restrained-joints")                                     \
+    X(KENT_NO_RESTRAINT, "none")
+
+#define FRICTION_LAWS(X)                                                               \
+    X(KENT_FRICTIONLESS, "frictionless")                                               \
+    X(KENT_COLEBROOK_WHITE, "Colebrook-White")                                         \
+    X(KENT_HAZEN_WILLIAMS, "Hazen-Williams")                                           \
+    X(KENT_MANNING, "Manning")                                                         \
+    X(KENT_DARCY_FIXED, "fixed Darcy factor")
+
+#define AXIAL_SUPPORTS(X)                                                              \
+    X(KENT_FLEXIBLE_JOINTS, "flexible-joints")                                         \
+    X(KENT_FIXED_UPSTREAM, "fixed-upstream")                                           \
+    X(KENT_FIXED_THROUGHOUT, "fixed-throughout")
+
+#define AS_CASE(name, word)                                                            \
+    case name:                                                                         \
+        return word;
+#define WORD_FUNCTION(function, type, LIST)                                            \
+    const char *function(type value)                                                   \
+    {                                                                                  \
+        switch (value) {                                                               \
+            LIST(AS_CASE)                                                              \
+        }                                                                              \
+        return "unknown";                                                              \
+    }
+
+WORD_FUNCTION(kent_fitting_type_word, kent_fitting_type, FITTING_TYPES)
+WORD_FUNCTION(kent_orientation_word, kent_orientation, ORIENTATIONS)
+WORD_FUNCTION(kent_joint_word, kent_joint, JOINTS)
+WORD_FUNCTION(kent_class_word, kent_class, CLASSES)
+WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, RESTRAINTS)
+WORD_FUNCTION(kent_friction_word, kent_friction_law, FRICTION_LAWS)
+WORD_FUNCTION(kent_axial_support_word, kent_axial_support, AXIAL_SUPPORTS)
+
+bool kent_joint_slips(kent_joint joint)
+{
+    return joint == KENT_PUSH_ON || joint == KENT_MECHANICAL;
+}

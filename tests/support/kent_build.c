@@ -1,0 +1,378 @@
+#include "kent_build.h"
+#include "kent_check.h"
+
+#include <assert.h>
+#include <math.h>
+#include <stdio.h>
+#include <string.h>
+
+enum {
+    POINTS,
+    PIPES,
+    ROUTE,
+    FIXED_LEVELS,
+    OUTFLOWS,
+    VALVES,
+    SCENARIOS,
+    EVENTS,
+    LAW,
+    SOILS,
+    NOTES,
+    PORTS,
+    LISTS
+};
+
+static_assert((int)LISTS == (int)KENT_BUILD_LISTS, "one capacity for each list");
+
+/* Room for one more in a list of the model's; its index. */
+static int one_more(kent_build *b, int list, void **array, size_t *count, size_t size)
+{
+    if (kent_grow(array, &b->capacity[list], *count + 1, size) != 0) {
+        fail_msg("no memory for the model under test");
+    }
+    return (int)(*count)++;
+}
+
+static void name(char id[KENT_ID], const char *text)
+{
+    (void)snprintf(id, KENT_ID, "%s", text);
+}
+
+static int point_named(const kent_build *b, const char *id)
+{
+    const int point = kent_model_point_index(b->model, id);
+    if (point < 0) fail_msg("the model under test has no point \"%s\"", id);
+    return point;
+}
+
+kent_build kent_build_new(void)
+{
+    kent_build b = {.model = kent_model_new()};
+    if (!b.model) fail_msg("no memory for the model under test");
+
+    kent_model *m = b.model;
+    m->files = kent_alloc(1, sizeof *m->files);
+    if (m->files) m->files[0] = kent_copy_text("built.cfg");
+    if (!m->files || !m->files[0]) fail_msg("no memory for the model under test");
+    m->file_count = 1;
+    m->water = (kent_water){.temperature = 288.15,
+                            .density = 1000.0,
+                            .bulk_modulus = 2.2e9,
+                            .viscosity = 1.0e-3,
+                            .vapour_pressure = 1705.0,
+                            .sound_speed = sqrt(2.2e6)};
+    m->barometric = 101325.0;
+    m->gravity = 9.80665;
+    m->rules = (kent_rules){.id = "built",
+                            .source = "common practice, no source",
+                            .safety_factor = 1.5,
+                            .height_to_depth = 0.5,
+                            .width_to_height = {1.0, 2.0},
+                            .least_thickness = 0.3,
+                            .least_height = 0.3,
+                            .side_step = 0.05,
+                            .least_cover = 0.6,
+                            .concrete_unit_weight = 23.0e3,
+                            .water_unit_weight = 9806.65,
+                            .wrapped_ratio = 0.7,
+                            .largest_volume = 30.0};
+    return b;
+}
+
+void kent_build_clear(kent_build *b)
+{
+    kent_model_free(b->model);
+    *b = (kent_build){0};
+}
+
+int kent_build_point(kent_build *b, const char *id, double x, double y, double z)
+{
+    kent_model *m = b->model;
+    const int i =
+        one_more(b, POINTS, (void **)&m->points, &m->point_count, sizeof *m->points);
+    m->points[i] = (kent_point){.at = {x, y, z},
+                                .cover = (double)NAN,
+                                .water_table = (double)NAN,
+                                .station = (double)NAN,
+                                .soil = -1,
+                                .place = {0, i + 1}};
+    name(m->points[i].id, id);
+    return i;
+}
+
+/* Appends the points named in route ("R P1 E") and returns how many there are. */
+static size_t add_route(kent_build *b, const char *route)
+{
+    kent_model *m = b->model;
+    size_t count = 0;
+    for (const char *at = route + strspn(route, " "); *at; at += strspn(at, " ")) {
+        char id[KENT_ID];
+        const size_t length = strcspn(at, " ");
+        (void)snprintf(id, sizeof id, "%.*s", (int)length, at);
+        const int point = point_named(b, id);
+        const int i =
+            one_more(b, ROUTE, (void **)&m->route, &m->route_count, sizeof *m->route);
+        m->route[i] = point;
+        count++;
+        at += length;
+    }
+    return count;
+}
+
+int kent_build_pipe(kent_build *b, const char *id, const char *route, double bore,
+                    double wave_speed)
+{
+    kent_model *m = b->model;
+    const double wall = 0.01; /* m */
+    const size_t first = m->route_count;
+    const size_t count = add_route(b, route);
+    const int i =
+        one_more(b, PIPES, (void **)&m->pipes, &m->pipe_count, sizeof *m->pipes);
+    m->pipes[i] = (kent_pipe){.route_first = first,
+                              .route_count = count,
+                              .length = (double)NAN,
+                              .inside_diameter = bore,
+                              .outside_diameter = bore + 2.0 * wall,
+                              .wall = wall,
+                              .wall_minimum = (double)NAN,
+                              .modulus = 170.0e9,
+                              .poisson = 0.28,
+                              .unit_mass = (double)NAN,
+                              .material_density = 7050.0,
+                              .friction = KENT_FRICTIONLESS,
+                              .wave_speed = wave_speed,
+                              .axial_support = KENT_FLEXIBLE_JOINTS,
+                              .joint = KENT_PUSH_ON,
+                              .laying_length = (double)NAN,
+                              .pressure_rating = (double)NAN,
+                              .place = {0, 100 + i}};
+    name(m->pipes[i].id, id);
+    return i;
+}
+
+int kent_build_fixed_level(kent_build *b, const char *at, double level)
+{
+    kent_model *m = b->model;
+    const int i = one_more(b, FIXED_LEVELS, (void **)&m->fixed_levels,
+                           &m->fixed_level_count, sizeof *m->fixed_levels);
+    m->fixed_levels[i] = (kent_fixed_level){
+        .point = point_named(b, at), .level = level, .node = -1, .place = {0, 200 + i}};
+    return i;
+}
+
+int kent_build_outflow(kent_build *b, const char *at, double flow)
+{
+    kent_model *m = b->model;
+    const int i = one_more(b, OUTFLOWS, (void **)&m->outflows, &m->outflow_count,
+                           sizeof *m->outflows);
+    m->outflows[i] = (kent_outflow){
+        .point = point_named(b, at), .flow = flow, .node = -1, .place = {0, 300 + i}};
+    return i;
+}
+
+int kent_build_valve(kent_build *b, const char *id, const char *at, double capacity,
+                     double discharge_level)
+{
+    kent_model *m = b->model;
+    const int i =
+        one_more(b, VALVES, (void **)&m->valves, &m->valve_count, sizeof *m->valves);
+    m->valves[i] = (kent_valve){.point = point_named(b, at),
+                                .type = "linear",
+                                .curve = kent_valve_curve_linear(),
+                                .size = 1.0,
+                                .capacity = capacity,
+                                .flow = (double)NAN,
+                                .opening = 1.0,
+                                .discharge_level = discharge_level,
+                                .node = {-1, -1},
+                                .place = {0, 400 + i}};
+    name(m->valves[i].id, id);
+    return i;
+}
+
+int kent_build_scenario(kent_build *b, const char *id, double duration)
+{
+    kent_model *m = b->model;
+    const int i = one_more(b, SCENARIOS, (void **)&m->scenarios, &m->scenario_count,
+                           sizeof *m->scenarios);
+    m->scenarios[i] = (kent_scenario){.duration = duration,
+                                      .class_of = KENT_OCCASIONAL,
+                                      .event_first = m->event_count,
+                                      .place = {0, 500 + i}};
+    name(m->scenarios[i].id, id);
+    return i;
+}
+
+static int add_event(kent_build *b, int scenario, kent_event event)
+{
+    kent_model *m = b->model;
+    if (scenario + 1 != (int)m->scenario_count) {
+        fail_msg("events belong to the scenario added last");
+    }
+    const int i =
+        one_more(b, EVENTS, (void **)&m->events, &m->event_count, sizeof *m->events);
+    m->events[i] = event;
+    m->events[i].place = (kent_place){0, 600 + i};
+    m->scenarios[scenario].event_count++;
+    return i;
+}
+
+int kent_build_ramp(kent_build *b, int scenario, kent_event_kind kind, int target,
+                    double start_time, double ramp_time, double to)
+{
+    return add_event(b, scenario,
+                     (kent_event){.kind = kind,
+                                  .target = target,
+                                  .start_time = start_time,
+                                  .ramp_time = ramp_time,
+                                  .to = to});
+}
+
+int kent_build_law(kent_build *b, int scenario, kent_event_kind kind, int target,
+                   double start_time, const kent_law_point *law, size_t count)
+{
+    kent_model *m = b->model;
+    const size_t first = m->law_count;
+    for (size_t k = 0; k < count; k++) {
+        const int i = one_more(b, LAW, (void **)&m->law, &m->law_count, sizeof *m->law);
+        m->law[i] = law[k];
+    }
+    return add_event(b, scenario,
+                     (kent_event){.kind = kind,
+                                  .target = target,
+                                  .start_time = start_time,
+                                  .ramp_time = (double)NAN,
+                                  .to = (double)NAN,
+                                  .law_first = first,
+                                  .law_count = count});
+}
+
+int kent_build_soil(kent_build *b, const char *id, double allowable_bearing,
+                    double unit_weight, double cover)
+{
+    kent_model *m = b->model;
+    const double nan = (double)NAN;
+    const int i =
+        one_more(b, SOILS, (void **)&m->soils, &m->soil_count, sizeof *m->soils);
+    m->soils[i] = (kent_soil){.source = "given in the case",
+                              .allowable_bearing = allowable_bearing,
+                              .factor_inside = 1.0,
+                              .vertical_bearing = nan,
+                              .unit_weight = unit_weight,
+                              .friction_angle = nan,
+                              .cohesion = nan,
+                              .friction_ratio = nan,
+                              .adhesion_ratio = nan,
+                              .passive_ratio = nan,
+                              .place = {0, 700 + i}};
+    name(m->soils[i].id, id);
+    m->ground.soil = i;
+    m->ground.cover = cover;
+    return i;
+}
+
+static int add_note(kent_build *b, const char *id, int point)
+{
+    kent_model *m = b->model;
+    const double nan = (double)NAN;
+    const int i =
+        one_more(b, NOTES, (void **)&m->notes, &m->note_count, sizeof *m->notes);
+    m->notes[i] = (kent_fitting_note){.point = point,
+                                      .type = -1,
+                                      .angle = nan,
+                                      .orientation = -1,
+                                      .restraint = -1,
+                                      .soil = -1,
+                                      .cover = nan,
+                                      .weight = nan,
+                                      .face = nan,
+                                      .place = {0, 800 + i}};
+    name(m->notes[i].id, id);
+    return i;
+}
+
+int kent_build_note(kent_build *b, const char *at)
+{
+    return add_note(b, at, point_named(b, at));
+}
+
+int kent_build_ports(kent_build *b, const char *id, int type, const kent_port *ports,
+                     size_t count)
+{
+    kent_model *m = b->model;
+    const int note = add_note(b, id, -1);
+    m->notes[note].type = type;
+    m->notes[note].port_first = m->given_port_count;
+    m->notes[note].port_count = count;
+    for (size_t k = 0; k < count; k++) {
+        const int i = one_more(b, PORTS, (void **)&m->given_ports, &m->given_port_count,
+                               sizeof *m->given_ports);
+        m->given_ports[i] = ports[k];
+    }
+    return note;
+}
+
+kent_port kent_build_port(kent_vec3 direction, double pressure, double flow,
+                          double inside_diameter)
+{
+    return (kent_port){.direction = direction,
+                       .inside_diameter = inside_diameter,
+                       .seal_diameter = inside_diameter,
+                       .outside_diameter = (double)NAN,
+                       .momentum_factor = 1.0,
+                       .span = -1,
+                       .toward = -1,
+                       .pressure = pressure,
+                       .flow = flow};
+}
+
+void kent_build_derive(kent_build *b)
+{
+    b->complaints = (kent_complaints){0};
+    const kent_status status = kent_model_derive(b->model, &b->complaints);
+    for (size_t i = 0; i < b->complaints.count && i < KENT_COMPLAINTS_KEPT; i++) {
+        const kent_complaint *c = &b->complaints.kept[i];
+        print_error("%s:%d: %s\n", c->file, c->line, c->what);
+    }
+    if (status != KENT_OK) {
+        fail_msg("the model under test: %s", kent_status_text(status));
+    }
+    if (!kent_model_is_valid(b->model)) fail_msg("the model under test is not valid");
+}
+
+const char *kent_build_complaint(kent_build *b)
+{
+    b->complaints = (kent_complaints){0};
+    if (kent_model_derive(b->model, &b->complaints) != KENT_E_INPUT) {
+        fail_msg("the model under test was expected to be refused");
+    }
+    return b->complaints.kept[0].what;
+}
+
+int kent_build_span_of(const kent_build *b, const char *id)
+{
+    for (size_t i = 0; i < b->model->span_count; i++) {
+        if (strcmp(b->model->spans[i].id, id) == 0) return (int)i;
+    }
+    fail_msg("the model under test has no span \"%s\"", id);
+    return -1;
+}
+
+int kent_build_fitting_of(const kent_build *b, const char *id)
+{
+    for (size_t i = 0; i < b->model->fitting_count; i++) {
+        if (strcmp(b->model->fittings[i].id, id) == 0) return (int)i;
+    }
+    fail_msg("the model under test has no fitting \"%s\"", id);
+    return -1;
+}
+
+int kent_build_node_of(const kent_build *b, const char *point)
+{
+    const int wanted = point_named(b, point);
+    for (size_t i = 0; i < b->model->node_count; i++) {
+        if (b->model->nodes[i].point == wanted) return (int)i;
+    }
+    fail_msg("the model under test has no node at \"%s\"", point);
+    return -1;
+}
