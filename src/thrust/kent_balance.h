@@ -35,6 +35,15 @@ typedef struct kent_balance {
 void kent_balance_sum(const kent_port *ports, size_t count, double density,
                       kent_balance *b);
 
+/* Momentum factor of a port's stream at a flow (m3/s, either sign): the port's own
+ * where given, else by profile (docs/theory 8.6) with the friction of its pipe; of a
+ * smooth pipe where the port belongs to none. */
+double kent_port_momentum_factor(const kent_model *m, const kent_port *port,
+                                 double flow);
+
+/* The port whose velocity the piezometric head belongs to: the first of the widest. */
+size_t kent_port_widest(const kent_port *ports, size_t count);
+
 /* Worst imbalance of flow over the largest flow of a ports-only fitting, 0 .. 1. */
 double kent_balance_flow_gap(const kent_port *ports, size_t count);
 

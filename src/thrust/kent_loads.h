@@ -27,11 +27,13 @@ typedef struct kent_instant {
 } kent_instant;
 
 typedef struct kent_load_case {
-    char name[KENT_ID];  /* "test", "static", "steady", a scenario's id, "closed from P"
-                          */
+    /* "test", "static", "steady", a scenario's id, "closed from P", "given" */
+    char name[KENT_ID + 16];
     kent_case_kind kind; /* whose safety factor it takes */
-    int scenario;        /* -1: none */
+    int scenario;        /* -1: none; of a closed valve: whose peak presses on it */
     bool given;          /* the one case of a ports-only fitting */
+    bool closed;         /* of a shut valve, pressed from one side only: */
+    size_t pressed;      /* which port */
     double safety_factor;
     kent_instant worst[KENT_SENSES];
     double above_90_percent; /* s that the resultant stays above 0.9 of its peak; NAN
@@ -50,7 +52,9 @@ typedef struct kent_loads_result {
 
 typedef struct kent_recorder kent_recorder;
 
-/* For one model and its steady state; pass every scenario through it, in order. */
+/* For one model and its steady state, which must outlive it; pass every scenario
+ * through it, in any order. Per fitting and scenario it keeps about 4 kB, however many
+ * steps. */
 kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
                               kent_recorder **out, kent_error *err);
 void kent_recorder_free(kent_recorder *r);
@@ -65,7 +69,8 @@ const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count);
 void kent_recorder_start(kent_recorder *r, int scenario, double step);
 void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace);
 
-/* All load cases of all fittings; *out is the caller's. */
+/* All load cases of all fittings; *out is the caller's. A scenario that was never
+ * started has no case. */
 kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
                                  kent_error *err);
 void kent_loads_free(kent_loads_result *l);

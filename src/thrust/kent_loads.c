@@ -1,0 +1,240 @@
+#include "kent_recorder_internal.h"
+
+#include <math.h>
+#include <stdio.h>
+#include <stdlib.h>
+
+static const double PI = 3.14159265358979323846;
+
+double kent_thrust_horizontal(kent_vec3 thrust) { return hypot(thrust.x, thrust.y); }
+
+double kent_thrust_azimuth(kent_vec3 thrust)
+{
+    const double azimuth = atan2(thrust.x, thrust.y);
+
+    return azimuth < 0.0 ? azimuth + 2.0 * PI : azimuth;
+}
+
+/* ---- one case -----------------------------------------------------------------------
+ */
+
+static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
+                                 kent_case_kind kind, int scenario)
+{
+    kent_load_case *c = &loads->cases[loads->count++];
+    const double factor = m->loads.factor[kind];
+
+    *c = (kent_load_case){
+        .kind = kind,
+        .scenario = scenario,
+        .safety_factor = isnan(factor) ? m->rules.safety_factor : factor,
+        .above_90_percent = NAN,
+    };
+    for (size_t k = 0; k < KENT_SENSES; k++) {
+        c->worst[k].time = NAN;
+    }
+    return c;
+}
+
+/* A case of one instant: it is the worst of every sense that it has. */
+static void case_fill(kent_load_case *c, const kent_instant *instant)
+{
+    for (int k = 0; k < KENT_SENSES; k++) {
+        if (kent_instant_has_sense(instant, (kent_sense)k)) c->worst[k] = *instant;
+    }
+}
+
+static void case_name(kent_load_case *c, const char *name)
+{
+    (void)snprintf(c->name, sizeof c->name, "%s", name);
+}
+
+/* Pa under the field test, by elevation from where the gauge is read (9.1). */
+static double fitting_test_pressure(const kent_model *m, const kent_fitting *f)
+{
+    const int gauge = m->loads.test_gauge;
+    const double level = gauge >= 0 ? m->points[gauge].at.z : f->at.z;
+
+    return m->loads.test_pressure + m->water.density * m->gravity * (level - f->at.z);
+}
+
+/* Pa without flow under the highest connected level, or the one stated (9.2). */
+static double fitting_static_pressure(const kent_model *m, const kent_fitting *f)
+{
+    const kent_port *port = &m->ports[f->port_first];
+    const double level = isnan(m->loads.static_level)
+                             ? kent_static_level(m, m->spans[port->span].node[0])
+                             : m->loads.static_level;
+
+    return kent_model_pressure(m, level, f->at.z);
+}
+
+static void loads_add_at_rest(const kent_model *m, const kent_fitting *f,
+                              kent_fitting_loads *loads)
+{
+    if (!isnan(m->loads.test_pressure)) {
+        kent_load_case *c = loads_add(m, loads, KENT_CASE_TEST, -1);
+        const kent_instant i =
+            kent_instant_at_rest(m, f, fitting_test_pressure(m, f), -1);
+        case_name(c, "test");
+        case_fill(c, &i);
+    }
+    kent_load_case *c = loads_add(m, loads, KENT_CASE_STATIC, -1);
+    const kent_instant i =
+        kent_instant_at_rest(m, f, fitting_static_pressure(m, f), -1);
+    case_name(c, "static");
+    case_fill(c, &i);
+}
+
+static void loads_add_steady(const kent_recorder *r, const kent_fitting *f,
+                             kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, -1);
+    kent_frame frame = {.time = NAN};
+
+    for (size_t i = 0; i < f->port_count; i++) {
+        const kent_port *port = &m->ports[f->port_first + i];
+        frame.head[i] = kent_steady_head(m, r->steady, port->span, port->chainage);
+        frame.flow[i] = port->sign * r->steady->span_flow[port->span];
+    }
+    const kent_instant i = kent_instant_of_frame(m, f, &frame);
+    case_name(c, "steady");
+    case_fill(c, &i);
+}
+
+static kent_case_kind scenario_kind(const kent_scenario *s)
+{
+    switch (s->class_of) {
+    case KENT_RECURRING:
+        return KENT_CASE_RECURRING;
+    case KENT_OCCASIONAL:
+        return KENT_CASE_OCCASIONAL;
+    case KENT_EXCEPTIONAL:
+        break;
+    }
+    return KENT_CASE_EXCEPTIONAL;
+}
+
+static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t scenario,
+                               kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_slot *slot = &r->slots[scenario];
+    const kent_seen *seen = &slot->seen[fitting];
+    kent_load_case *c =
+        loads_add(m, loads, scenario_kind(&m->scenarios[scenario]), (int)scenario);
+
+    case_name(c, m->scenarios[scenario].id);
+    if (seen->best[KENT_RESULTANT] < 0.0) return; /* not one instant was taken */
+    for (int k = 0; k < KENT_SENSES; k++) {
+        if (!(seen->best[k] > 0.0) && k != KENT_RESULTANT) continue;
+        const kent_instant i =
+            kent_instant_of_frame(m, &m->fittings[fitting], &seen->frame[k]);
+        if (kent_instant_has_sense(&i, (kent_sense)k)) c->worst[k] = i;
+    }
+    c->above_90_percent = kent_seen_above_90_percent(seen, slot->step);
+}
+
+/* A valve shut with the most that can press on one side and nothing behind (9.4). */
+static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side,
+                             kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[fitting];
+    const int toward = m->ports[f->port_first + side].toward;
+    kent_case_kind kind = KENT_CASE_STATIC;
+    double pressure = fitting_static_pressure(m, f), time = NAN;
+    int scenario = -1;
+
+    if (!isnan(m->loads.test_pressure)) {
+        const double test = fitting_test_pressure(m, f);
+        if (!(pressure > test)) {
+            pressure = test;
+            kind = KENT_CASE_TEST;
+        }
+    }
+    for (size_t s = 0; s < m->scenario_count; s++) {
+        if (!r->slots[s].started) continue;
+        const kent_seen *seen = &r->slots[s].seen[fitting];
+        const double peak = kent_model_pressure(m, seen->highest_head[side], f->at.z);
+        if (!(peak > pressure)) continue;
+        pressure = peak;
+        kind = scenario_kind(&m->scenarios[s]);
+        scenario = (int)s;
+        time = seen->highest_at[side];
+    }
+    kent_load_case *c = loads_add(m, loads, kind, scenario);
+    kent_instant i = kent_instant_at_rest(m, f, pressure, (int)side);
+    i.time = time;
+    c->closed = true;
+    c->pressed = side;
+    (void)snprintf(c->name, sizeof c->name, "closed from %s",
+                   m->points[toward >= 0 ? toward : f->point].id);
+    case_fill(c, &i);
+}
+
+/* ---- all of them --------------------------------------------------------------------
+ */
+
+static int loads_of_fitting(const kent_recorder *r, size_t index,
+                            kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[index];
+
+    loads->cases = kent_alloc(3 + m->scenario_count + KENT_PORTS, sizeof *loads->cases);
+    if (!loads->cases) return -1;
+    if (!kent_fitting_in_network(f)) {
+        kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, -1);
+        const kent_instant i = kent_instant_given(m, f);
+        c->given = true;
+        case_name(c, "given");
+        case_fill(c, &i);
+        return 0;
+    }
+    loads_add_at_rest(m, f, loads);
+    loads_add_steady(r, f, loads);
+    for (size_t s = 0; s < m->scenario_count; s++) {
+        if (r->slots[s].started) loads_add_scenario(r, index, s, loads);
+    }
+    for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
+        loads_add_closed(r, index, i, loads);
+    }
+    return 0;
+}
+
+kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
+                                 kent_error *err)
+{
+    const size_t count = r->model->fitting_count;
+    kent_status status = KENT_E_NOMEM;
+    kent_loads_result *loads = kent_alloc(1, sizeof *loads);
+
+    if (!loads) goto done;
+    loads->fittings = kent_alloc(count, sizeof *loads->fittings);
+    if (!loads->fittings) goto done;
+    loads->fitting_count = count;
+    for (size_t s = 0; s < r->model->scenario_count; s++) {
+        if (r->slots[s].failed) goto done;
+    }
+    for (size_t i = 0; i < count; i++) {
+        if (loads_of_fitting(r, i, &loads->fittings[i])) goto done;
+    }
+    *out = loads;
+    loads = NULL; /* handed over */
+    status = KENT_OK;
+done:
+    kent_loads_free(loads);
+    return status ? kent_error_nomem(err) : KENT_OK;
+}
+
+void kent_loads_free(kent_loads_result *l)
+{
+    if (!l) return;
+    for (size_t i = 0; i < l->fitting_count; i++) {
+        free(l->fittings[i].cases);
+    }
+    free(l->fittings);
+    free(l);
+}

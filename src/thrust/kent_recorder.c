@@ -1,0 +1,368 @@
+#include "kent_recorder_internal.h"
+
+#include <assert.h>
+#include <math.h>
+#include <stdint.h>
+#include <stdlib.h>
+#include <string.h>
+
+static const double PI = 3.14159265358979323846;
+
+/* m/s: beta of the search is taken at the steady flow, but at no slower one than this:
+ * 8.6 says why that cannot change what prints. */
+static const double USUAL_SPEED = 1.0;
+
+/* ---- what to watch ------------------------------------------------------------------
+ */
+
+/* Index of the watch at a place, added where it is new among those from `first` on. */
+static int recorder_watch(kent_recorder *r, size_t first, int span, double chainage,
+                          size_t *index)
+{
+    for (size_t i = first; i < r->watch_count; i++) {
+        if (r->watches[i].span != span) continue;
+        if (r->watches[i].chainage != chainage) continue;
+        *index = i;
+        return 0;
+    }
+    if (kent_grow((void **)&r->watches, &r->watch_capacity, r->watch_count + 1,
+                  sizeof *r->watches)) {
+        return -1;
+    }
+    r->watches[r->watch_count] = (kent_watch){span, chainage};
+    *index = r->watch_count++;
+    return 0;
+}
+
+/* The sensor's term of a watch, added where it is new. NULL: no memory. */
+static kent_term *recorder_term(kent_recorder *r, kent_sensor *sensor, size_t watch)
+{
+    for (size_t i = 0; i < sensor->term_count; i++) {
+        kent_term *term = &r->terms[sensor->term_first + i];
+        if (term->watch == watch) return term;
+    }
+    if (kent_grow((void **)&r->terms, &r->term_capacity, r->term_count + 1,
+                  sizeof *r->terms)) {
+        return NULL;
+    }
+    kent_term *term = &r->terms[r->term_count++];
+    *term = (kent_term){.watch = watch};
+    sensor->term_count++;
+    return term;
+}
+
+/* s: across the fitting from one port to another and back. */
+static double fitting_crossing(const kent_model *m, const kent_fitting *f)
+{
+    double longest = 0.0, next = 0.0, slowest = INFINITY;
+
+    for (size_t i = 0; i < f->port_count; i++) {
+        const kent_port *port = &m->ports[f->port_first + i];
+        slowest = fmin(slowest, m->spans[port->span].wave_speed);
+        next = fmax(next, fmin(longest, port->face));
+        longest = fmax(longest, port->face);
+    }
+    return 2.0 * (longest + next) / slowest;
+}
+
+/* Coefficients of one port's push: F = per_head H + own Q^2 + widest Q_ref^2 +
+ * constant, from 8.1 with the pressure of 8.3; Q^2 is the same for flow either way. */
+static int sensor_add_port(kent_recorder *r, const kent_fitting *f, size_t i,
+                           kent_sensor *sensor)
+{
+    const kent_model *m = r->model;
+    const kent_port *ports = &m->ports[f->port_first], *port = &ports[i];
+    const size_t widest = kent_port_widest(ports, f->port_count);
+    const double rho = m->water.density, gravity = m->gravity;
+    const double seal = 0.25 * PI * port->seal_diameter * port->seal_diameter;
+    const double bore = 0.25 * PI * port->inside_diameter * port->inside_diameter;
+    const double wide =
+        0.25 * PI * ports[widest].inside_diameter * ports[widest].inside_diameter;
+    const double flow =
+        fmax(fabs(r->steady->span_flow[port->span]), USUAL_SPEED * bore);
+    const double beta = kent_port_momentum_factor(m, port, flow);
+    const kent_vec3 inward = kent_vec3_scale(-1.0, port->direction);
+
+    kent_term *own = recorder_term(r, sensor, sensor->watch[i]);
+    if (!own) return -1;
+    own->per_head =
+        kent_vec3_add(own->per_head, kent_vec3_scale(rho * gravity * seal, inward));
+    own->per_square =
+        kent_vec3_add(own->per_square, kent_vec3_scale(beta * rho / bore, inward));
+    sensor->constant = kent_vec3_add(
+        sensor->constant, kent_vec3_scale(-rho * gravity * f->at.z * seal, inward));
+    if (f->type == KENT_VALVE || i == widest) return 0;
+    own->per_square = kent_vec3_add(
+        own->per_square, kent_vec3_scale(-0.5 * rho * seal / (bore * bore), inward));
+    kent_term *reference = recorder_term(r, sensor, sensor->watch[widest]);
+    if (!reference) return -1;
+    reference->per_square =
+        kent_vec3_add(reference->per_square,
+                      kent_vec3_scale(0.5 * rho * seal / (wide * wide), inward));
+    return 0;
+}
+
+static int recorder_add_fitting(kent_recorder *r, size_t index)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[index];
+    kent_sensor *sensor = &r->sensors[index];
+    const size_t first = r->watch_count;
+
+    sensor->term_first = r->term_count;
+    if (!kent_fitting_in_network(f)) return 0;
+    assert(f->port_count <= KENT_PORTS);
+    for (size_t i = 0; i < f->port_count; i++) {
+        const kent_port *port = &m->ports[f->port_first + i];
+        if (recorder_watch(r, first, port->span, port->chainage, &sensor->watch[i])) {
+            return -1;
+        }
+    }
+    if (f->weight > 0.0) sensor->constant = (kent_vec3){0.0, 0.0, -f->weight};
+    for (size_t i = 0; i < f->port_count; i++) {
+        if (sensor_add_port(r, f, i, sensor)) return -1;
+    }
+    sensor->crossing = fitting_crossing(m, f);
+    return 0;
+}
+
+kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
+                              kent_recorder **out, kent_error *err)
+{
+    kent_status status = KENT_E_NOMEM;
+    kent_recorder *r = kent_alloc(1, sizeof *r);
+
+    if (!r) goto done;
+    r->model = m;
+    r->steady = s;
+    r->sensors = kent_alloc(m->fitting_count, sizeof *r->sensors);
+    r->slots = kent_alloc(m->scenario_count, sizeof *r->slots);
+    if (!r->sensors || !r->slots) goto done;
+    for (size_t i = 0; i < m->fitting_count; i++) {
+        if (recorder_add_fitting(r, i)) goto done;
+    }
+    *out = r;
+    r = NULL; /* handed over */
+    status = KENT_OK;
+done:
+    kent_recorder_free(r);
+    return status ? kent_error_nomem(err) : KENT_OK;
+}
+
+void kent_recorder_free(kent_recorder *r)
+{
+    if (!r) return;
+    for (size_t i = 0; r->slots && i < r->model->scenario_count; i++) {
+        free(r->slots[i].seen);
+        free(r->slots[i].past);
+    }
+    free(r->slots);
+    free(r->sensors);
+    free(r->terms);
+    free(r->watches);
+    free(r);
+}
+
+const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count)
+{
+    *count = r->watch_count;
+    return r->watches;
+}
+
+/* ---- one scenario -------------------------------------------------------------------
+ */
+
+/* Instants to go back for dQ/dt: the crossing in whole steps, at least one. */
+static size_t sensor_lag(const kent_sensor *sensor, double step)
+{
+    if (!(sensor->crossing > 0.0)) return 0;
+    return (size_t)fmax(1.0, ceil(sensor->crossing / step - 1e-9));
+}
+
+void kent_recorder_start(kent_recorder *r, int scenario, double step)
+{
+    kent_slot *slot = &r->slots[scenario];
+    const size_t count = r->model->fitting_count;
+
+    assert(step > 0.0);
+    free(slot->seen);
+    free(slot->past);
+    *slot = (kent_slot){.started = true, .step = step};
+    for (size_t i = 0; i < count; i++) {
+        const size_t lag = sensor_lag(&r->sensors[i], step);
+        if (lag > slot->past_rows) slot->past_rows = lag;
+    }
+    slot->seen = kent_alloc(count, sizeof *slot->seen);
+    slot->past = kent_alloc(slot->past_rows * r->watch_count, sizeof *slot->past);
+    slot->failed = !slot->seen || !slot->past;
+    for (size_t i = 0; i < count && !slot->failed; i++) {
+        kent_seen *seen = &slot->seen[i];
+        seen->best[KENT_RESULTANT] = -1.0; /* nil counts as a resultant */
+        for (size_t k = 0; k < KENT_PORTS; k++) {
+            seen->highest_head[k] = -INFINITY;
+        }
+    }
+}
+
+unsigned long long kent_level_of(double square)
+{
+    uint64_t bits = 0;
+
+    /* exponent and ten bits of the mantissa: they grow as the number does */
+    memcpy(&bits, &square, sizeof bits);
+    return bits >> 42;
+}
+
+static inline void seen_count_level(kent_seen *seen, double square)
+{
+    const unsigned long long level = kent_level_of(square);
+
+    if (level > seen->top) {
+        if (level - seen->top >= KENT_LEVELS) {
+            memset(seen->at_level, 0, sizeof seen->at_level);
+        } else {
+            for (unsigned long long k = seen->top + 1; k <= level; k++) {
+                seen->at_level[k % KENT_LEVELS] = 0;
+            }
+        }
+        seen->top = level;
+    } else if (seen->top - level >= KENT_LEVELS) {
+        return; /* far below the peak */
+    }
+    seen->at_level[level % KENT_LEVELS]++;
+}
+
+double kent_seen_above_90_percent(const kent_seen *seen, double step)
+{
+    const unsigned long long least = kent_level_of(0.81 * seen->best[KENT_RESULTANT]);
+    double instants = 0.0;
+
+    for (unsigned long long k = least; k <= seen->top; k++) {
+        instants += seen->at_level[k % KENT_LEVELS];
+    }
+    return instants * step;
+}
+
+/* m3/s at a watch, `lag` instants before row n of the trace. */
+static double slot_flow_before(const kent_slot *slot, const kent_trace *trace,
+                               size_t watches, size_t watch, size_t n, size_t lag)
+{
+    if (n >= lag) return trace->flow[(n - lag) * trace->watch_count + watch];
+    const size_t back = lag - n; /* 1: the instant before this trace */
+    return slot->past[(slot->past_rows - back) * watches + watch];
+}
+
+static void seen_keep(const kent_recorder *r, const kent_slot *slot,
+                      const kent_trace *trace, size_t index, size_t n,
+                      kent_frame *frame)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[index];
+    const kent_sensor *sensor = &r->sensors[index];
+    const size_t lag = sensor_lag(sensor, slot->step);
+
+    *frame = (kent_frame){.time = trace->time[n]};
+    for (size_t i = 0; i < f->port_count; i++) {
+        const size_t watch = sensor->watch[i], at = n * trace->watch_count + watch;
+        const double sign = m->ports[f->port_first + i].sign;
+        frame->head[i] = trace->head[at];
+        frame->flow[i] = sign * trace->flow[at];
+        if (lag == 0) continue;
+        const double before =
+            sign * slot_flow_before(slot, trace, r->watch_count, watch, n, lag);
+        frame->flow_rate[i] =
+            (frame->flow[i] - before) / ((double)lag * slot->step); /* 8.7 */
+    }
+}
+
+/* Finds the worst instants of a trace for one fitting, then keeps those alone. */
+static void seen_take(const kent_recorder *r, const kent_slot *slot,
+                      const kent_trace *trace, size_t index)
+{
+    const kent_sensor *sensor = &r->sensors[index];
+    const kent_term *terms = &r->terms[sensor->term_first];
+    kent_seen *seen = &slot->seen[index];
+    size_t at[KENT_SENSES];
+    bool better[KENT_SENSES] = {false};
+
+    for (size_t n = 0; n < trace->count; n++) {
+        const double *head = trace->head + n * trace->watch_count;
+        const double *flow = trace->flow + n * trace->watch_count;
+        kent_vec3 t = sensor->constant;
+        for (size_t k = 0; k < sensor->term_count; k++) {
+            const kent_term *term = &terms[k];
+            const double h = head[term->watch];
+            const double square = flow[term->watch] * flow[term->watch];
+            t.x += term->per_head.x * h + term->per_square.x * square;
+            t.y += term->per_head.y * h + term->per_square.y * square;
+            t.z += term->per_head.z * h + term->per_square.z * square;
+        }
+        const double sideways = t.x * t.x + t.y * t.y;
+        const double now[KENT_SENSES] = {sideways + t.z * t.z, sideways, t.z, -t.z};
+        if (!(now[KENT_RESULTANT] >= 0.0)) continue; /* not a number */
+        for (size_t k = 0; k < KENT_SENSES; k++) {
+            if (!(now[k] > seen->best[k])) continue;
+            seen->best[k] = now[k];
+            at[k] = n;
+            better[k] = true;
+        }
+        seen_count_level(seen, now[KENT_RESULTANT]);
+    }
+    for (size_t k = 0; k < KENT_SENSES; k++) {
+        if (better[k]) seen_keep(r, slot, trace, index, at[k], &seen->frame[k]);
+    }
+}
+
+/* The highest head on each side of a valve: what presses on it once it is shut. */
+static void seen_take_faces(const kent_recorder *r, const kent_trace *trace,
+                            size_t index, kent_seen *seen)
+{
+    const kent_fitting *f = &r->model->fittings[index];
+
+    for (size_t i = 0; i < f->port_count; i++) {
+        const size_t watch = r->sensors[index].watch[i];
+        for (size_t n = 0; n < trace->count; n++) {
+            const double head = trace->head[n * trace->watch_count + watch];
+            if (!(head > seen->highest_head[i])) continue;
+            seen->highest_head[i] = head;
+            seen->highest_at[i] = trace->time[n];
+        }
+    }
+}
+
+/* Keeps the last rows of past and trace together. Before t = 0 flow was steady. */
+static void slot_take_past(const kent_recorder *r, kent_slot *slot,
+                           const kent_trace *trace)
+{
+    const size_t rows = slot->past_rows, width = r->watch_count;
+    const size_t fresh = trace->count < rows ? trace->count : rows;
+
+    if (rows == 0) return;
+    memmove(slot->past, slot->past + fresh * width,
+            (rows - fresh) * width * sizeof *slot->past);
+    for (size_t k = 0; k < fresh; k++) {
+        const size_t n = trace->count - fresh + k;
+        memcpy(slot->past + (rows - fresh + k) * width,
+               trace->flow + n * trace->watch_count, width * sizeof *slot->past);
+    }
+}
+
+void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace)
+{
+    kent_slot *slot = &r->slots[scenario];
+
+    assert(slot->started && trace->watch_count >= r->watch_count);
+    if (slot->failed || trace->count == 0) return;
+    for (size_t k = 0; k < slot->past_rows && !slot->past_filled; k++) {
+        memcpy(slot->past + k * r->watch_count, trace->flow,
+               r->watch_count * sizeof *slot->past);
+    }
+    slot->past_filled = true;
+    for (size_t i = 0; i < r->model->fitting_count; i++) {
+        const kent_fitting *f = &r->model->fittings[i];
+        if (!kent_fitting_in_network(f)) continue;
+        seen_take(r, slot, trace, i);
+        if (f->type == KENT_VALVE) seen_take_faces(r, trace, i, &slot->seen[i]);
+    }
+    slot_take_past(r, slot, trace);
+}

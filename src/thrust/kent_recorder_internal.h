@@ -1,0 +1,88 @@
+/* What the recorder keeps. Only thrust/ looks inside. */
+#ifndef KENT_RECORDER_INTERNAL_H
+#define KENT_RECORDER_INTERNAL_H
+
+#include "kent_loads.h"
+
+/* Heads and flows at a fitting's ports at one instant. */
+typedef struct kent_frame {
+    double time;                  /* s; NAN */
+    double head[KENT_PORTS];      /* m, piezometric */
+    double flow[KENT_PORTS];      /* m3/s out of the fitting */
+    double flow_rate[KENT_PORTS]; /* m3/s2 */
+} kent_frame;
+
+/* Thrust without its unsteady part is  constant + sum (per_head H + per_square Q^2)
+ * over the watches of a fitting: one term each. */
+typedef struct kent_term {
+    size_t watch;
+    kent_vec3 per_head;   /* N/m */
+    kent_vec3 per_square; /* N s2/m6 */
+} kent_term;
+
+typedef struct kent_sensor { /* of one fitting */
+    size_t term_first, term_count;
+    size_t watch[KENT_PORTS]; /* by port */
+    kent_vec3 constant;       /* N */
+    double crossing;          /* s, a wave across the fitting and back; 0: no face */
+} kent_sensor;
+
+/* Instants counted by their level: the leading bits of the squared resultant, 1024 to a
+ * doubling. A doubling's upper part above 0.9^2 spans fewer than 400 of them. */
+enum { KENT_LEVELS = 512 };
+
+typedef struct kent_seen {    /* of one fitting in one scenario */
+    double best[KENT_SENSES]; /* N2, N2, N, N; -1: none yet, up and down 0 */
+    kent_frame frame[KENT_SENSES];
+    double highest_head[KENT_PORTS], highest_at[KENT_PORTS]; /* m, s; in-line valves */
+    unsigned long long top;                                  /* highest level met */
+    unsigned
+        at_level[KENT_LEVELS]; /* instants by level, the lowest bits of which index */
+} kent_seen;
+
+typedef struct kent_slot { /* of one scenario */
+    bool started, failed;
+    double step;     /* s */
+    kent_seen *seen; /* [fitting_count] */
+    double *past;    /* [past_rows][watch_count] m3/s, the instants before the next */
+    size_t past_rows;
+    bool past_filled;
+} kent_slot;
+
+struct kent_recorder {
+    const kent_model *model;
+    const kent_steady *steady;
+    kent_watch *watches;
+    size_t watch_count, watch_capacity;
+    kent_term *terms;
+    size_t term_count, term_capacity;
+    kent_sensor *sensors; /* [fitting_count] */
+    kent_slot *slots;     /* [scenario_count] */
+};
+
+/* Level of a squared resultant. */
+unsigned long long kent_level_of(double square);
+
+/* s that the resultant was above 0.9 of its peak. */
+double kent_seen_above_90_percent(const kent_seen *seen, double step);
+
+/* Whether the fitting stands in the network, not on given ports. */
+bool kent_fitting_in_network(const kent_fitting *f);
+
+/* The balance of an instant in the network: pressures from heads by 8.3 and 9.3. Each
+ * side of a valve keeps the pressure of its own head. */
+kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
+                                   const kent_frame *frame);
+
+/* The balance at rest under one pressure (Pa) at every port, or at port `only` alone.
+ */
+kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
+                                  double pressure, int only);
+
+/* The balance of the pressures and flows that the ports state themselves. */
+kent_instant kent_instant_given(const kent_model *m, const kent_fitting *f);
+
+/* Whether the thrust without its unsteady part points the way of a sense at all. */
+bool kent_instant_has_sense(const kent_instant *i, kent_sense sense);
+
+#endif
