@@ -85,6 +85,8 @@ typedef struct kent_block {
     bool has_face; /* gravity, base: a face takes the sideways part */
     kent_face face;
     double face_thickness, face_utilisation;
+    double face_volume; /* m3, not in volume; 0 without a face of its own */
+    bool submerged;     /* gravity, base: weight less the water it displaces */
 } kent_block;
 
 typedef struct kent_leg { /* restrained length of one port */

@@ -1,0 +1,215 @@
+/* The block's part of a hand calculation: depths, areas, sides, what is reached. */
+#include "kent_holding_internal.h"
+#include "kent_side_internal.h"
+
+#define UP(x) "ceil((" x ")/step - " KENT_SIDE_SLACK_TEXT ")*step"
+
+static void put(kent_derivation *d, const char *symbol, double value, kent_kind kind,
+                const char *says)
+{
+    kent_derivation_put(d, symbol, value, kind, KENT_GIVEN, says);
+}
+
+static void rule(kent_derivation *d, const char *symbol, double value, kent_kind kind,
+                 const char *says)
+{
+    kent_derivation_put(d, symbol, value, kind, KENT_CATALOGUE, says);
+}
+
+/* Utilisation, the factor reached, and both beside what the soil value holds. */
+static void derive_reached(const kent_holding_work *w, kent_holding *h,
+                           kent_sense sense, const char *formula)
+{
+    kent_derivation *d = &h->derivation;
+    const double asked = w->loads->cases[h->by_sense[sense]].safety_factor;
+    const double use = w->use[sense];
+
+    rule(d, "SF", asked, KENT_RATIO, "factor asked for, of this load case");
+    kent_derivation_work(d, "u", use, KENT_RATIO, formula, "10.9",
+                         "factored load over resistance");
+    kent_derivation_work(d, "SFr", asked / use, KENT_RATIO, "SF/u", "10.10",
+                         "factor reached");
+    if (sense == KENT_UPWARD) return; /* weight has no factor inside */
+    const double inside = w->soil->factor_inside;
+    kent_derivation_put(d, "fi", inside, KENT_RATIO, kent_soil_source(w->soil),
+                        "factor already inside the soil's value");
+    kent_derivation_work(d, "SFa", asked * inside, KENT_RATIO, "SF*fi", "10.10",
+                         "factor asked for, with the one inside");
+    kent_derivation_work(d, "SFt", asked / use * inside, KENT_RATIO, "SFr*fi", "10.10",
+                         "factor reached, with the one inside");
+}
+
+/* Cover to axis to the greatest height of a face. */
+static void derive_depth(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_rules *r = &w->m->rules;
+    const double axis = kent_site_axis(&w->site);
+
+    put(d, "OD", w->site.diameter, KENT_DIAMETER, "outside diameter of the pipe");
+    rule(d, "step", r->side_step, KENT_LENGTH, "sides come in multiples of this");
+    if (isnan(axis)) return;
+    put(d, "H", w->site.cover, KENT_LENGTH, "cover, ground to crown");
+    kent_derivation_work(d, "axis", axis, KENT_LENGTH, "H + OD/2", "10.1",
+                         "depth of the pipe's axis");
+}
+
+static void derive_sides(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_rules *r = &w->m->rules;
+    const kent_face *face = &h->block.face;
+    const bool hole = w->site.hole > 0.0;
+    const double axis = kent_site_axis(&w->site);
+
+    rule(d, "hd", r->height_to_depth, KENT_RATIO, "height over depth of base, at most");
+    kent_derivation_work(d, "hmax", kent_face_height_limit(r, axis), KENT_LENGTH,
+                         "hd*axis/(1 - hd/2)", "10.3", "greatest height of the face");
+    rule(d, "rw", r->width_to_height[0], KENT_RATIO, "width over height, at least");
+    rule(d, "rx", r->width_to_height[1], KENT_RATIO, "width over height, at most");
+    kent_derivation_put(d, "h", face->height, KENT_LENGTH, KENT_COMPUTED,
+                        "height, of those up to the greatest the one with least w x h");
+    kent_derivation_work(d, "w", face->width, KENT_LENGTH,
+                         hole ? "max(" UP("Ag/h") ", " UP("rw*h") ")"
+                              : "max(" UP("Aq/h") ", " UP("rw*h") ")",
+                         "10.6", "width");
+    kent_derivation_work(d, "wmax", r->width_to_height[1] * face->height, KENT_LENGTH,
+                         "rx*h", "10.6", "width, at most");
+    kent_derivation_work(d, "base", axis + 0.5 * face->height, KENT_LENGTH,
+                         "axis + h/2", "10.2", "depth of the face's base");
+    rule(d, "tmin", r->least_thickness, KENT_LENGTH, "least thickness");
+    const double t = kent_block_thickness(r, *face, w->site.diameter);
+    kent_derivation_work(d, "t", t, KENT_LENGTH, UP("max(tmin, (max(w, h) - OD)/2)"),
+                         "10.7",
+                         "thickness: spread from pipe to face within 45 degrees");
+    kent_derivation_work(d, "V", face->width * face->height * t, KENT_VOLUME, "w*h*t",
+                         "10.8", "concrete");
+}
+
+static void derive_face(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const double load = w->demand.load[KENT_SIDEWAYS], q = w->site.allowable;
+    const bool hole = w->site.hole > 0.0;
+
+    kent_derivation_heading(d, "Face for the sideways thrust");
+    derive_depth(w, h);
+    kent_derivation_put(d, "q", q, KENT_STRESS, kent_soil_source(w->soil),
+                        "allowable bearing of the soil");
+    kent_derivation_work(d, "Aq", load / q, KENT_AREA, "Fh/q", "10.4",
+                         "bearing area asked for");
+    if (hole) {
+        kent_derivation_work(d, "Ah", w->site.hole, KENT_AREA, "pi*OD^2/4", "10.5",
+                             "of the face taken by the pipe that passes through");
+        kent_derivation_work(d, "Ag", load / q + w->site.hole, KENT_AREA, "Aq + Ah",
+                             "10.5", "area within the sides");
+    }
+    derive_sides(w, h);
+    kent_derivation_work(d, "qr", w->use[KENT_SIDEWAYS] * q, KENT_STRESS,
+                         hole ? "Fh/(w*h - Ah)" : "Fh/(w*h)", "10.9",
+                         "bearing pressure reached");
+    derive_reached(w, h, KENT_SIDEWAYS, "qr/q");
+}
+
+/* Weight of a cubic metre of the block, in water where it stands in it. */
+static const char *derive_concrete(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_rules *r = &w->m->rules;
+
+    rule(d, "gc", r->concrete_unit_weight, KENT_UNIT_WEIGHT, "unit weight of concrete");
+    if (!h->block.submerged) return "gc";
+    rule(d, "gw", r->water_unit_weight, KENT_UNIT_WEIGHT,
+         "unit weight of ground water");
+    kent_derivation_work(d, "gs", r->concrete_unit_weight - r->water_unit_weight,
+                         KENT_UNIT_WEIGHT, "gc - gw", "10.12",
+                         "unit weight under water");
+    return "gs";
+}
+
+static void derive_gravity(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_rules *r = &w->m->rules;
+    const kent_block *b = &h->block;
+    const double up = w->demand.load[KENT_UPWARD];
+    const double down = w->demand.load[KENT_DOWNWARD];
+
+    kent_derivation_heading(d, "Weight for the upward thrust");
+    derive_depth(w, h);
+    const bool wet = derive_concrete(w, h)[1] == 's';
+    const double unit_weight =
+        r->concrete_unit_weight - (wet ? r->water_unit_weight : 0.0);
+    kent_derivation_work(d, "V0", kent_gravity_volume(up, 1.0, unit_weight),
+                         KENT_VOLUME, wet ? "Fup/gs" : "Fup/gc", "10.13",
+                         "concrete that weighs as much");
+    if (down > 0.0) {
+        kent_derivation_put(d, "qv", w->site.vertical, KENT_STRESS,
+                            kent_soil_source(w->soil), "bearing under a base");
+        kent_derivation_work(d, "A0", down / w->site.vertical, KENT_AREA, "Fdn/qv",
+                             "10.16", "area that carries the downward thrust");
+    }
+    kent_derivation_work(d, "a", b->width, KENT_LENGTH,
+                         down > 0.0 ? UP("max(V0^(1/3), sqrt(A0))") : UP("V0^(1/3)"),
+                         "10.14", "side of a square plan");
+    rule(d, "hmin", r->least_height, KENT_LENGTH, "least height");
+    kent_derivation_work(d, "hg", b->height, KENT_LENGTH, UP("max(V0/(a*a), hmin)"),
+                         "10.15", "height");
+    if (!isnan(kent_site_axis(&w->site))) {
+        kent_derivation_work(d, "base", kent_site_axis(&w->site) + 0.5 * b->height,
+                             KENT_LENGTH, "axis + hg/2", "10.2",
+                             "depth of the block's base");
+    }
+    kent_derivation_work(d, "V", b->volume, KENT_VOLUME, "a*a*hg", "10.8", "concrete");
+    derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(V*gs)" : "Fup/(V*gc)");
+    if (down > 0.0) derive_reached(w, h, KENT_DOWNWARD, "Fdn/(a*a*qv)");
+}
+
+static void derive_base(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_rules *r = &w->m->rules;
+    const kent_block *b = &h->block;
+    const double down = w->demand.load[KENT_DOWNWARD], q = w->site.vertical;
+    const bool lifted = w->demand.load[KENT_UPWARD] > 0.0;
+
+    kent_derivation_heading(d, "Base for the downward thrust");
+    derive_depth(w, h);
+    kent_derivation_put(d, "qv", q, KENT_STRESS, kent_soil_source(w->soil),
+                        "bearing under a base");
+    kent_derivation_work(d, "A0", down / q, KENT_AREA, "Fdn/qv", "10.16",
+                         "base area asked for");
+    kent_derivation_work(d, "b1", b->width, KENT_LENGTH, UP("max(sqrt(A0), OD)"),
+                         "10.17", "along the pipe");
+    kent_derivation_work(d, "b2", b->height, KENT_LENGTH, UP("max(A0/b1, OD)"), "10.17",
+                         "across");
+    rule(d, "tmin", r->least_thickness, KENT_LENGTH, "least thickness");
+    const kent_face plan = {.width = b->width, .height = b->height};
+    const double spread = kent_block_thickness(r, plan, w->site.diameter);
+    kent_derivation_work(d, "t", spread, KENT_LENGTH,
+                         UP("max(tmin, (max(b1, b2) - OD)/2)"), "10.7",
+                         "thickness: spread from pipe to base within 45 degrees");
+    if (lifted) {
+        const bool wet = derive_concrete(w, h)[1] == 's';
+        kent_derivation_work(d, "tw", b->thickness, KENT_LENGTH,
+                             wet ? "max(t, " UP("Fup/gs/(b1*b2)") ")"
+                                 : "max(t, " UP("Fup/gc/(b1*b2)") ")",
+                             "10.13", "thickness that also weighs enough");
+    }
+    kent_derivation_work(d, "V", b->volume, KENT_VOLUME,
+                         lifted ? "b1*b2*tw" : "b1*b2*t", "10.8", "concrete");
+    kent_derivation_work(d, "qr", w->use[KENT_DOWNWARD] * q, KENT_STRESS, "Fdn/(b1*b2)",
+                         "10.9", "bearing pressure reached");
+    derive_reached(w, h, KENT_DOWNWARD, "qr/qv");
+    if (lifted) {
+        derive_reached(w, h, KENT_UPWARD, b->submerged ? "Fup/(V*gs)" : "Fup/(V*gc)");
+    }
+}
+
+void kent_block_derive(const kent_holding_work *w, kent_holding *h)
+{
+    if (h->block.type == KENT_BLOCK_NONE) return;
+    if (w->demand.load[KENT_SIDEWAYS] > 0.0) derive_face(w, h);
+    if (h->block.type == KENT_BLOCK_GRAVITY) derive_gravity(w, h);
+    if (h->block.type == KENT_BLOCK_BASE) derive_base(w, h);
+}

@@ -1,0 +1,60 @@
+/* One block from numbers alone: what it must hold, where it stands, what came out. */
+#ifndef KENT_BLOCK_INTERNAL_H
+#define KENT_BLOCK_INTERNAL_H
+
+#include "kent_restraint.h"
+
+/* A part of the thrust below this share of the whole is left to the ground's friction
+ * and the block's own weight. */
+#define KENT_BLOCK_NEGLIGIBLE 0.02
+
+typedef struct kent_site { /* what a block stands in; m, Pa */
+    double diameter;       /* outside, of the largest pipe */
+    double cover;          /* ground to crown; NAN: not stated */
+    double water_table;    /* below ground; INFINITY: none */
+    double allowable;      /* on a face */
+    double vertical;       /* under a base */
+    double hole;           /* m2 of a face that the pipe passes through; 0: none */
+} kent_site;
+
+/* Factored loads by sense, N; parts that are negligible are 0. */
+typedef struct kent_demand {
+    double load[KENT_SENSES];
+} kent_demand;
+
+typedef enum kent_fault {
+    KENT_FAULT_NONE,
+    KENT_FAULT_COVER_UNSTATED,
+    KENT_FAULT_SHALLOW, /* less cover than the rules' least */
+    KENT_FAULT_FACE,    /* no face of the asked area at this depth */
+    KENT_FAULT_VOLUME,  /* larger than the rules let be sized */
+    KENT_FAULT_SOIL_UNSTATED,
+    KENT_FAULT_SOIL /* peat, fill: nothing may count on it */
+} kent_fault;
+
+kent_block kent_block_none(void); /* nothing: NAN, and no concrete */
+
+double kent_site_axis(const kent_site *site); /* m below ground */
+
+/* N/m3 of concrete whose base lies at depth (m): buoyed where any of it is under water.
+ */
+double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth);
+
+/* What would let a face bear sideways (N) here: the least cover (m; NAN: none within
+ * reach), and the least allowable bearing (Pa; NAN: no face fits at all). */
+double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,
+                              double sideways);
+double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
+                                double sideways);
+
+/* Sizes a block for every part of the demand. On a fault *out holds what was worked
+ * out. */
+kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
+                           const kent_demand *demand, kent_block *out);
+
+/* Factored load over resistance of each sense the block holds; 0 for the others. */
+void kent_block_use(const kent_block *block, const kent_rules *rules,
+                    const kent_site *site, const kent_demand *demand,
+                    double use[KENT_SENSES]);
+
+#endif

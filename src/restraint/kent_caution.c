@@ -1,0 +1,155 @@
+#include "kent_holding_internal.h"
+#include "kent_said_internal.h"
+
+/* s: a peak this short loads a block like a knock. Common practice, no source. */
+static const double KNOCK = 0.1;
+
+/* A presumptive bearing that asks for a steeper passive coefficient than this, where
+ * the friction angle is not known, is unlikely: friction angles above 42 degrees. */
+static const double STEEPEST_PASSIVE = 5.0;
+
+/* N: beyond it the concrete itself wants designing. CIRIA Report 128 (1994) covers
+ * blocks to about this thrust without. */
+static const double LARGE = 1000e3;
+
+/* The highest pressure of any sense of a case, Pa; NAN: none set. */
+static double case_pressure(const kent_load_case *c)
+{
+    double highest = NAN;
+    for (int s = 0; s < KENT_SENSES; s++) {
+        if (c->worst[s].set) highest = fmax(highest, c->worst[s].pressure);
+    }
+    return highest;
+}
+
+static void caution_test_pressure(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_system units = w->m->units;
+    const kent_load_case *worst = NULL;
+    double test = NAN, highest = 0.0;
+
+    for (size_t i = 0; i < w->loads->count; i++) {
+        const kent_load_case *c = &w->loads->cases[i];
+        const double p = case_pressure(c);
+        if (c->kind == KENT_CASE_TEST) test = p;
+        if (c->scenario < 0 || !(p > highest)) continue;
+        highest = p;
+        worst = c;
+    }
+    if (!worst || !(highest > test * (1.0 + 1e-9))) return; /* NAN: no test case */
+    kent_notes_add(&h->cautions, "'%s' reaches %s here, above the test pressure of %s",
+                   worst->name, kent_say(units, KENT_PRESSURE, highest).s,
+                   kent_say(units, KENT_PRESSURE, test).s);
+}
+
+static void caution_peak(const kent_holding_work *w, kent_holding *h)
+{
+    if (h->governing < 0) return;
+    const kent_load_case *c = &w->loads->cases[h->governing];
+    if (c->scenario < 0 || !(c->above_90_percent < KNOCK)) return;
+    kent_notes_add(
+        &h->cautions,
+        "the governing peak is short: '%s' stays above 90 %% of it for %.3f s", c->name,
+        c->above_90_percent);
+}
+
+/* Whether the ground can be as strong as its presumptive value says, at this depth. */
+static void caution_bearing(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_soil *s = w->soil;
+    const kent_system units = w->m->units;
+
+    if (!s || isnan(s->unit_weight) || isnan(w->site.cover)) return;
+    const double axis = kent_site_axis(&w->site);
+    const double water = fmax(0.0, axis - w->site.water_table);
+    const double stress = s->unit_weight * axis - water * w->m->rules.water_unit_weight;
+    const double claimed = s->allowable_bearing * s->factor_inside;
+    if (!isnan(s->friction_angle) && !isnan(s->cohesion)) {
+        const double passive =
+            kent_passive_pressure(s->friction_angle, s->cohesion, stress);
+        if (claimed <= passive) return;
+        kent_notes_add(
+            &h->cautions,
+            "soil '%s': %s with the factor inside it is more than the passive "
+            "pressure at the pipe's axis by Rankine, %s",
+            s->id, kent_say(units, KENT_STRESS, claimed).s,
+            kent_say(units, KENT_STRESS, passive).s);
+    } else if (claimed > STEEPEST_PASSIVE * stress) {
+        kent_notes_add(&h->cautions,
+                       "soil '%s': %s at this depth asks for a passive coefficient of "
+                       "%.1f, which is unlikely",
+                       s->id, kent_say(units, KENT_STRESS, claimed).s,
+                       claimed / stress);
+    }
+}
+
+static void caution_block(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_system units = w->m->units;
+    const kent_block *b = &h->block;
+
+    if (b->type == KENT_BLOCK_NONE) return;
+    if (b->type == KENT_BLOCK_BEARING || b->has_face) caution_bearing(w, h);
+    if (w->site.hole > 0.0 || h->chosen == KENT_ANCHOR_BLOCK) {
+        kent_notes_add(&h->cautions,
+                       "the thrust runs along a trench or comes from either side: both "
+                       "faces must reach undisturbed ground, not backfill");
+    }
+    if (b->type == KENT_BLOCK_GRAVITY) {
+        kent_notes_add(&h->cautions,
+                       "straps or rods from pipe to block must carry %s upwards",
+                       kent_say(units, KENT_FORCE, w->demand.load[KENT_UPWARD]).s);
+        if (!w->soil) {
+            kent_notes_add(&h->cautions,
+                           "the soil under the gravity block is not stated");
+        }
+    }
+    if (b->submerged) {
+        kent_notes_add(&h->cautions,
+                       "the block stands in ground water: its concrete is "
+                       "taken at its weight less the water's");
+    }
+    if (isnan(w->fitting->water_table) && b->type == KENT_BLOCK_GRAVITY) {
+        kent_notes_add(&h->cautions, "no water table is stated: none is assumed");
+    }
+    if (h->design_thrust > LARGE) {
+        kent_notes_add(&h->cautions, "beyond %s the concrete itself must be designed",
+                       kent_say(units, KENT_FORCE, LARGE).s);
+    }
+}
+
+static void caution_joints(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_fitting_type type = w->fitting->type;
+    const bool branch = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
+
+    if (h->chosen != KENT_RESTRAINED_JOINTS || h->leg_count == 0) return;
+    if (branch) {
+        kent_notes_add(&h->cautions,
+                       "the restrained length of a branch takes no credit "
+                       "for the run, whose restrained length is not given");
+    }
+    kent_notes_add(&h->cautions,
+                   "restrained length %s; joints and pipes must be rated for the "
+                   "governing pressure",
+                   kent_leg_rule_of(type)->says);
+}
+
+void kent_holding_caution(kent_holding_work *w, kent_holding *h)
+{
+    if (w->fitting->within_deflection) {
+        kent_notes_add(&h->cautions,
+                       "a turn of %s is within what the joint takes: listed, not held",
+                       kent_say(w->m->units, KENT_ANGLE, w->fitting->angle).s);
+    } else if (h->needs_nothing) {
+        kent_notes_add(&h->cautions,
+                       "no load case pushes with more than %s: nothing is "
+                       "needed",
+                       kent_say(w->m->units, KENT_FORCE, KENT_HOLDING_LEAST).s);
+    }
+    caution_test_pressure(w, h);
+    if (h->needs_nothing) return;
+    caution_peak(w, h);
+    caution_block(w, h);
+    caution_joints(w, h);
+}

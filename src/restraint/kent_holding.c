@@ -1,0 +1,231 @@
+#include "kent_holding_internal.h"
+#include "kent_side_internal.h"
+
+#include <limits.h>
+
+/* Loads nearer than this, relative, are a tie: the case listed first governs. */
+static const double TIE = 1e-12;
+
+double kent_holding_part(const kent_load_case *c, kent_sense sense)
+{
+    const kent_instant *at = &c->worst[sense];
+    if (!at->set) return 0.0;
+
+    const kent_vec3 t = at->balance.thrust;
+    switch (sense) {
+    case KENT_SIDEWAYS:
+        return kent_thrust_horizontal(t);
+    case KENT_UPWARD:
+        return fmax(0.0, t.z);
+    case KENT_DOWNWARD:
+        return fmax(0.0, -t.z);
+    case KENT_RESULTANT:
+    case KENT_SENSES:
+        break;
+    }
+    return kent_vec3_length(t);
+}
+
+/* ---- what governs
+ * ---------------------------------------------------------------------- */
+
+/* The case with the greatest factored load of a sense, leaving one out (-1: none left
+ * out); -1 where no case has any. */
+static int case_greatest(const kent_fitting_loads *loads, kent_sense sense, int leave,
+                         double *load)
+{
+    int greatest = -1;
+
+    *load = 0.0;
+    for (size_t i = 0; i < loads->count; i++) {
+        const kent_load_case *c = &loads->cases[i];
+        const double factored = c->safety_factor * kent_holding_part(c, sense);
+        if ((int)i == leave || !(factored > *load * (1.0 + TIE))) continue;
+        greatest = (int)i;
+        *load = factored;
+    }
+    return greatest;
+}
+
+/* The sense with the greatest of these, sideways first where they tie. */
+static kent_sense sense_greatest(const double by_sense[KENT_SENSES])
+{
+    kent_sense greatest = KENT_SIDEWAYS;
+
+    for (kent_sense s = KENT_UPWARD; s <= KENT_DOWNWARD; s++) {
+        if (by_sense[s] > by_sense[greatest] * (1.0 + TIE)) greatest = s;
+    }
+    return greatest;
+}
+
+static void holding_govern(const kent_holding_work *w, kent_holding *h,
+                           kent_sense sense)
+{
+    h->sense = sense;
+    h->governing = h->by_sense[sense];
+    h->design_thrust = w->factored[sense];
+    if (h->governing < 0) return;
+    h->factor_asked = w->loads->cases[h->governing].safety_factor;
+    h->runner_up = case_greatest(w->loads, sense, h->governing, &h->runner_up_load);
+    if (h->runner_up < 0) h->runner_up_load = NAN;
+}
+
+static double greatest_unfactored(const kent_fitting_loads *loads)
+{
+    double greatest = 0.0;
+    for (size_t i = 0; i < loads->count; i++) {
+        greatest = fmax(greatest, kent_holding_part(&loads->cases[i], KENT_RESULTANT));
+    }
+    return greatest;
+}
+
+void kent_holding_find(kent_holding_work *w, kent_holding *h)
+{
+    for (kent_sense s = KENT_RESULTANT; s < KENT_SENSES; s++) {
+        h->by_sense[s] = case_greatest(w->loads, s, -1, &w->factored[s]);
+        const bool counts =
+            w->factored[s] > KENT_BLOCK_NEGLIGIBLE * w->factored[KENT_RESULTANT];
+        w->demand.load[s] = counts ? w->factored[s] : 0.0;
+    }
+    holding_govern(w, h, sense_greatest(w->factored));
+    h->needs_nothing = w->fitting->within_deflection ||
+                       !(greatest_unfactored(w->loads) >= KENT_HOLDING_LEAST);
+    if (h->by_sense[KENT_RESULTANT] < 0) return;
+    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
+    w->pull = c->worst[KENT_RESULTANT].balance.thrust;
+    w->pull_factor = c->safety_factor;
+}
+
+/* ---- a block
+ * --------------------------------------------------------------------------- */
+
+static kent_fault holding_soil_fault(const kent_holding_work *w)
+{
+    const bool leans =
+        w->demand.load[KENT_SIDEWAYS] > 0.0 || w->demand.load[KENT_DOWNWARD] > 0.0;
+
+    if (!w->soil) return leans ? KENT_FAULT_SOIL_UNSTATED : KENT_FAULT_NONE;
+    return kent_soil_counts(w->soil) ? KENT_FAULT_NONE : KENT_FAULT_SOIL;
+}
+
+/* What the block reaches, and which sense uses most of it. */
+static void holding_reach(kent_holding_work *w, kent_holding *h)
+{
+    kent_block *b = &h->block;
+    const bool gravity = b->type == KENT_BLOCK_GRAVITY;
+    const bool base = b->type == KENT_BLOCK_BASE;
+    const kent_sense own = gravity ? KENT_UPWARD : base ? KENT_DOWNWARD : KENT_SIDEWAYS;
+
+    kent_block_use(b, &w->m->rules, &w->site, &w->demand, w->use);
+    const kent_load_case *c = &w->loads->cases[h->by_sense[own]];
+    b->utilisation = w->use[own];
+    b->factor_reached = c->safety_factor / b->utilisation;
+    if (b->has_face) b->face_utilisation = w->use[KENT_SIDEWAYS];
+    if (base) {
+        b->bearing_pressure = w->use[KENT_DOWNWARD] * w->site.vertical;
+    } else if (w->use[KENT_SIDEWAYS] > 0.0) {
+        b->bearing_pressure = w->use[KENT_SIDEWAYS] * w->site.allowable;
+    }
+
+    holding_govern(w, h, sense_greatest(w->use));
+    h->held = true;
+    h->utilisation = w->use[h->sense];
+    h->factor_reached = h->factor_asked / h->utilisation;
+}
+
+static void holding_block(kent_holding_work *w, kent_holding *h)
+{
+    w->fault = holding_soil_fault(w);
+    if (w->fault == KENT_FAULT_NONE) {
+        w->fault = kent_block_size(&w->m->rules, &w->site, &w->demand, &h->block);
+    }
+    if (w->fault == KENT_FAULT_NONE) {
+        holding_reach(w, h);
+        return;
+    }
+    const double area = h->block.bearing_area;
+    h->block = kent_block_none();
+    h->block.bearing_area = area; /* what was asked for still tells something */
+}
+
+void kent_holding_size(kent_holding_work *w, kent_holding *h)
+{
+    switch (h->chosen) {
+    case KENT_THRUST_BLOCK:
+    case KENT_ANCHOR_BLOCK:
+        holding_block(w, h);
+        break;
+    case KENT_RESTRAINED_JOINTS:
+    case KENT_NO_RESTRAINT:
+        break;
+    }
+}
+
+/* ---- restrained length
+ * ----------------------------------------------------------------- */
+
+static kent_leg leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
+{
+    const double laying = work->pipe->laying_length;
+    double length = work->length;
+    int pipes = 0;
+
+    if (laying > 0.0) {
+        const double whole = ceil(length / laying - KENT_SIDE_SLACK);
+        pipes = whole < INT_MAX ? (int)whole : INT_MAX;
+        length = (double)pipes * laying;
+    }
+    return (kent_leg){
+        .port = port,
+        .length = work->length,
+        .pipes = pipes,
+        .fits = kent_leg_fits(w->m, w->standings, w->index, port, length, &w->met),
+    };
+}
+
+/* m restrained over m needed, of one leg; 1 where pipes have no known length. */
+static double leg_use(const kent_holding_work *w, const kent_leg *leg)
+{
+    const kent_port *p = &w->m->ports[w->fitting->port_first + leg->port];
+    const double laying = w->m->pipes[w->m->spans[p->span].pipe].laying_length;
+    return leg->pipes > 0 ? leg->length / (leg->pipes * laying) : 1.0;
+}
+
+static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
+{
+    const bool either = kent_leg_rule_of(w->fitting->type)->either;
+    size_t fitting = 0;
+    double use = 0.0;
+
+    for (size_t i = 0; i < h->leg_count; i++) {
+        if (!h->legs[i].fits) continue;
+        fitting++;
+        use = fmax(use, leg_use(w, &h->legs[i]));
+    }
+    h->held = wanted > 0 && (either ? fitting > 0 : fitting == wanted);
+    holding_govern(w, h, KENT_RESULTANT);
+    if (!h->held) return;
+    h->utilisation = use;
+    h->factor_reached = h->factor_asked / use;
+}
+
+void kent_holding_legs(kent_holding_work *w, kent_holding *h)
+{
+    const kent_leg_rule *rule = kent_leg_rule_of(w->fitting->type);
+    const size_t end = rule->first + rule->count < w->fitting->port_count
+                           ? rule->first + rule->count
+                           : w->fitting->port_count;
+    size_t wanted = 0;
+
+    for (size_t k = rule->first; k < end; k++) {
+        kent_leg_work work;
+        const unsigned lack =
+            kent_leg_prepare(w->m, w->fitting, k, w->pull, w->pull_factor, &work);
+        wanted++;
+        w->lack |= lack;
+        if (lack != 0) continue;
+        h->legs[h->leg_count++] = leg_of(w, k, &work);
+        h->restrained_length = fmax(h->restrained_length, work.length);
+    }
+    if (h->chosen == KENT_RESTRAINED_JOINTS) holding_joints(w, h, wanted);
+}

@@ -1,0 +1,95 @@
+/* The hand calculation of one fitting, from its thrust to what holds it. */
+#include "kent_holding_internal.h"
+
+#include <stdio.h>
+#include <string.h>
+
+static const struct sense_words {
+    const char *part, *formula, *factored, *formula_factored, *says;
+} SENSES[KENT_SENSES] = {
+    [KENT_RESULTANT] = {"T", "sqrt(Tx^2 + Ty^2 + Tz^2)", "F", "SF*T", "whole thrust"},
+    [KENT_SIDEWAYS] = {"Th", "sqrt(Tx^2 + Ty^2)", "Fh", "SF*Th", "sideways thrust"},
+    [KENT_UPWARD] = {"Tup", "Tz", "Fup", "SF*Tup", "upward thrust"},
+    [KENT_DOWNWARD] = {"Tdn", "-Tz", "Fdn", "SF*Tdn", "downward thrust"},
+};
+
+kent_source kent_soil_source(const kent_soil *soil)
+{
+    return strncmp(soil->source, "given", 5) == 0 ? KENT_GIVEN : KENT_CATALOGUE;
+}
+
+/* Whether the sum of the momentum table that stands above is this thrust. */
+static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
+{
+    const kent_line *x = kent_derivation_find(d, "Tx");
+    const kent_line *y = kent_derivation_find(d, "Ty");
+    const kent_line *z = kent_derivation_find(d, "Tz");
+    const double near = 1e-9 * kent_vec3_length(thrust);
+
+    return x && y && z && fabs(x->value - thrust.x) <= near &&
+           fabs(y->value - thrust.y) <= near && fabs(z->value - thrust.z) <= near;
+}
+
+/* A thrust of one sense and its factored load (09 gives the thrust itself). */
+static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense sense)
+{
+    kent_derivation *d = &h->derivation;
+    const struct sense_words *word = &SENSES[sense];
+    const kent_load_case *c = &w->loads->cases[h->by_sense[sense]];
+    const double part = kent_holding_part(c, sense);
+    const bool given = !isnan(w->m->loads.factor[c->kind]);
+    char says[120];
+
+    (void)snprintf(says, sizeof says, "Factored load: %s, case '%s'", word->says,
+                   c->name);
+    kent_derivation_heading(d, says);
+    if (derivation_has(d, c->worst[sense].balance.thrust)) {
+        kent_derivation_work(d, word->part, part, KENT_FORCE, word->formula, "8.1",
+                             word->says);
+    } else {
+        kent_derivation_put(d, word->part, part, KENT_FORCE, KENT_COMPUTED, word->says);
+    }
+    kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
+                        given ? KENT_GIVEN : KENT_CATALOGUE,
+                        "factor of this load case");
+    kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
+                         word->formula_factored, "10.11", "factored load");
+    if (sense != h->sense || h->runner_up < 0) return;
+    (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
+                   w->loads->cases[h->runner_up].name);
+    kent_derivation_put(d, "F2", h->runner_up_load, KENT_FORCE, KENT_COMPUTED, says);
+}
+
+static void derive_peak(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_load_case *c = &w->loads->cases[h->governing];
+    const kent_instant *at = &c->worst[h->sense];
+
+    if (c->scenario < 0) return;
+    kent_derivation_put(&h->derivation, "tpk", at->time, KENT_TIME, KENT_COMPUTED,
+                        "instant of this peak");
+    kent_derivation_put(&h->derivation, "t90", c->above_90_percent, KENT_TIME,
+                        KENT_COMPUTED, "stays above 90 % of its peak for");
+}
+
+void kent_holding_derive(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+
+    if (h->governing < 0) {
+        kent_derivation_heading(d, "No load case pushes on this fitting");
+        return;
+    }
+    kent_loads_derive(w->m, w->fitting, &w->loads->cases[h->governing], h->sense, d);
+    derive_peak(w, h);
+    derive_load(w, h, h->sense); /* first of all what governs */
+    if (h->needs_nothing) return;
+    for (kent_sense s = KENT_SIDEWAYS; s < KENT_SENSES; s++) {
+        const bool counts = h->block.type != KENT_BLOCK_NONE && w->demand.load[s] > 0.0;
+        if (counts && s != h->sense) derive_load(w, h, s);
+    }
+    kent_block_derive(w, h);
+    for (size_t i = 0; i < h->leg_count; i++) {
+        kent_leg_derive(w, h, &h->legs[i]);
+    }
+}

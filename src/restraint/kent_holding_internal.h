@@ -1,0 +1,47 @@
+/* One fitting on its way from load cases to what holds it. */
+#ifndef KENT_HOLDING_INTERNAL_H
+#define KENT_HOLDING_INTERNAL_H
+
+#include "kent_block_internal.h"
+#include "kent_leg_internal.h"
+
+/* N: a smaller thrust, unfactored, needs no holding. Common practice, no source: the
+ * weight of half a metre of small pipe. */
+#define KENT_HOLDING_LEAST 500.0
+
+typedef struct kent_holding_work { /* borrowed, for one fitting */
+    const kent_model *m;
+    const kent_fitting *fitting;
+    size_t index;
+    const kent_fitting_loads *loads;
+    const kent_standings *standings;
+    const kent_soil *soil; /* NULL: not stated */
+    kent_site site;
+    double factored[KENT_SENSES]; /* N, greatest over the cases */
+    kent_demand demand;           /* the same without what is negligible */
+    kent_fault fault;
+    double use[KENT_SENSES]; /* of the block */
+    unsigned lack;           /* kent_lack, over all legs */
+    kent_vec3 pull;          /* N, the thrust that the legs are worked out for */
+    double pull_factor;
+    kent_notes met; /* what the legs meet; owned */
+} kent_holding_work;
+
+/* N, unfactored and not negative: the part of a case's thrust in one sense. */
+double kent_holding_part(const kent_load_case *c, kent_sense sense);
+
+void kent_holding_find(kent_holding_work *w, kent_holding *h);   /* what governs */
+void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
+void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
+void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */
+void kent_holding_caution(kent_holding_work *w, kent_holding *h);
+void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
+
+/* Parts of the hand calculation; all add to h's derivation. */
+void kent_block_derive(const kent_holding_work *w, kent_holding *h);
+void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg);
+
+/* "given" or "catalogue": where the values of a soil come from. */
+kent_source kent_soil_source(const kent_soil *soil);
+
+#endif

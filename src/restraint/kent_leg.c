@@ -1,0 +1,321 @@
+#include "kent_leg_internal.h"
+#include "kent_block_internal.h"
+#include "kent_said_internal.h"
+
+#include <assert.h>
+#include <stdlib.h>
+
+static const double PI = 3.14159265358979323846;
+
+/* Below this turn (rad) a thrust along the bisector says nothing about a leg's pull. */
+static const double LEAST_TURN = 1e-6;
+
+/* m: places nearer than this along a pipe are one place. */
+static const double SAME_PLACE = 1e-6;
+
+static const kent_leg_rule RULES[] = {
+    {KENT_BEND, 0, 2, true, false, "on each leg"},
+    {KENT_TEE, 2, KENT_PORTS, false, false, "on the branch"},
+    {KENT_WYE, 2, KENT_PORTS, false, false, "on the branch"},
+    {KENT_CROSS, 2, KENT_PORTS, false, false, "on each branch"},
+    {KENT_REDUCER, 0, 2, false, true, "on either leg alone"},
+    {KENT_DEAD_END, 0, 1, false, false, "behind the end"},
+    {KENT_VALVE, 0, 2, false, false, "on both sides, for a push from either"},
+    {KENT_STRAIGHT, 0, 0, false, false, "nowhere"},
+};
+
+const kent_leg_rule *kent_leg_rule_of(kent_fitting_type type)
+{
+    const size_t count = sizeof RULES / sizeof RULES[0];
+    size_t i = 0;
+
+    while (i + 1 < count && RULES[i].type != type) {
+        i++;
+    }
+    assert(RULES[i].type == type); /* every type has a row */
+    return &RULES[i];
+}
+
+bool kent_soil_counts(const kent_soil *soil)
+{
+    return soil != NULL && !soil->unreliable && soil->allowable_bearing > 0.0;
+}
+
+const kent_soil *kent_point_soil(const kent_model *m, int point)
+{
+    const int own = point >= 0 ? m->points[point].soil : -1;
+    const int soil = own >= 0 ? own : m->ground.soil;
+    return soil >= 0 ? &m->soils[soil] : NULL;
+}
+
+bool kent_leg_bears(const kent_fitting *fitting, kent_vec3 thrust)
+{
+    const double lifted = KENT_BLOCK_NEGLIGIBLE * kent_vec3_length(thrust);
+
+    if (fitting->type != KENT_BEND || fitting->orientation == KENT_CREST) return false;
+    return thrust.z <= lifted;
+}
+
+/* ---- one leg
+ * --------------------------------------------------------------------------- */
+
+/* N per m of empty pipe; NAN: not known. source 11.1 */
+static double pipe_weight(const kent_pipe *p, double gravity)
+{
+    const double mean = p->outside_diameter - p->wall;
+    if (!isnan(p->unit_mass)) return p->unit_mass * gravity;
+    return PI * mean * p->wall * p->material_density * gravity;
+}
+
+static unsigned soil_lacks(const kent_soil *s, bool bears)
+{
+    unsigned lack = 0;
+
+    if (isnan(s->unit_weight)) lack |= KENT_LACK_UNIT_WEIGHT;
+    if (isnan(s->friction_angle)) lack |= KENT_LACK_FRICTION_ANGLE;
+    if (isnan(s->cohesion)) lack |= KENT_LACK_COHESION;
+    if (isnan(s->friction_ratio) && s->friction_angle > 0.0) {
+        lack |= KENT_LACK_FRICTION_RATIO;
+    }
+    if (isnan(s->adhesion_ratio) && s->cohesion > 0.0) lack |= KENT_LACK_ADHESION_RATIO;
+    if (isnan(s->passive_ratio) && bears) lack |= KENT_LACK_PASSIVE_RATIO;
+    return lack;
+}
+
+/* A value that does not matter may be missing: what it multiplies is nil. */
+static double known(double value) { return isnan(value) ? 0.0 : value; }
+
+static void leg_grip(const kent_model *m, const kent_fitting *f, kent_leg_work *w)
+{
+    const kent_pipe *p = w->pipe;
+    const kent_soil *s = w->soil;
+    const double od = p->outside_diameter, bore = p->inside_diameter;
+    const bool wet = f->water_table < f->cover + od;
+    const double water = wet ? m->rules.water_unit_weight : 0.0;
+
+    w->pipe_weight = pipe_weight(p, m->gravity);
+    w->displaced = water * 0.25 * PI * od * od;
+    w->sleeve = m->ground.wrapped ? m->rules.wrapped_ratio : 1.0;
+    w->trench = (kent_trench){
+        .outside_diameter = od,
+        .cover = f->cover,
+        .pipe_weight = w->pipe_weight - w->displaced,
+        .water_weight = m->water.density * m->gravity * 0.25 * PI * bore * bore,
+        .unit_weight = s->unit_weight - water,
+        .friction_angle = s->friction_angle,
+        .cohesion = s->cohesion,
+        .friction_ratio = known(s->friction_ratio),
+        .adhesion_ratio = known(s->adhesion_ratio),
+        .passive_ratio = known(s->passive_ratio),
+    };
+    w->grip = kent_soil_grip_of(&w->trench);
+    w->friction = w->sleeve * (w->bend ? w->grip.friction : w->grip.friction_whole);
+    w->bearing = w->bears ? w->grip.bearing : 0.0;
+}
+
+unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size_t port,
+                          kent_vec3 thrust, double factor, kent_leg_work *out)
+{
+    const kent_port *p = &m->ports[fitting->port_first + port];
+    const kent_leg_rule *rule = kent_leg_rule_of(fitting->type);
+    const double push = kent_vec3_length(thrust);
+    unsigned lack = 0;
+
+    *out = (kent_leg_work){.factor = factor, .angle = fitting->angle, .length = NAN};
+    out->bend = rule->bend && fitting->angle > LEAST_TURN;
+    out->bears = kent_leg_bears(fitting, thrust);
+    if (p->span < 0) return KENT_LACK_PIPE;
+    if (fitting->soil < 0) return KENT_LACK_SOIL;
+    out->pipe = &m->pipes[m->spans[p->span].pipe];
+    out->soil = &m->soils[fitting->soil];
+    if (!kent_soil_counts(out->soil)) return KENT_LACK_SOIL;
+
+    lack = soil_lacks(out->soil, out->bears);
+    if (isnan(fitting->cover)) lack |= KENT_LACK_COVER;
+    if (isnan(pipe_weight(out->pipe, m->gravity))) lack |= KENT_LACK_PIPE_MASS;
+    if (lack != 0) return lack;
+
+    leg_grip(m, fitting, out);
+    if (out->bend) {
+        out->force = push / (2.0 * sin(0.5 * fitting->angle)); /* 11.8 */
+        out->length = kent_restrained_length_bend(out->force, fitting->angle, factor,
+                                                  out->friction, out->bearing);
+    } else {
+        out->force = push;
+        out->length = kent_restrained_length_end(push, factor, out->friction);
+    }
+    if (!(out->length >= 0.0) || isinf(out->length))
+        return KENT_LACK_SOIL; /* no grip */
+    return 0;
+}
+
+/* ---- how far it may run
+ * ---------------------------------------------------------------- */
+
+static int standing_compare(const void *left, const void *right)
+{
+    const kent_standing *a = left, *b = right;
+
+    if (a->span != b->span) return a->span < b->span ? -1 : 1;
+    if (a->chainage < b->chainage) return -1;
+    if (a->chainage > b->chainage) return 1;
+    return (a->fitting > b->fitting) - (a->fitting < b->fitting);
+}
+
+kent_status kent_standings_find(const kent_model *m, kent_standings *out,
+                                kent_error *err)
+{
+    kent_standing *at = kent_alloc(m->port_count, sizeof *at);
+    size_t count = 0;
+
+    if (!at) return kent_error_nomem(err);
+    for (size_t i = 0; i < m->fitting_count; i++) {
+        const kent_fitting *f = &m->fittings[i];
+        for (size_t k = 0; k < f->port_count; k++) {
+            const kent_port *p = &m->ports[f->port_first + k];
+            if (p->span < 0) continue;
+            at[count++] = (kent_standing){p->span, (int)i, p->chainage};
+        }
+    }
+    if (count > 0) qsort(at, count, sizeof *at, standing_compare);
+    *out = (kent_standings){.at = at, .count = count};
+    return KENT_OK;
+}
+
+void kent_standings_clear(kent_standings *s)
+{
+    free(s->at);
+    *s = (kent_standings){0};
+}
+
+/* First standing that is not before (span, chainage). */
+static size_t standing_search(const kent_standings *standings, int span,
+                              double chainage)
+{
+    size_t lo = 0, hi = standings->count;
+
+    while (lo < hi) {
+        const size_t mid = lo + (hi - lo) / 2;
+        const kent_standing *s = &standings->at[mid];
+        if (s->span < span || (s->span == span && s->chainage < chainage)) {
+            lo = mid + 1;
+        } else {
+            hi = mid;
+        }
+    }
+    return lo;
+}
+
+/* Looks at the fittings between the leg's start and its end; a bend on the way makes
+ * one system of both, anything else breaks the leg. */
+static bool leg_meets(const kent_model *m, const kent_standings *standings,
+                      size_t fitting, const kent_port *p, double length,
+                      kent_notes *notes)
+{
+    const bool ahead = p->sign > 0.0;
+    const double from = ahead ? p->chainage : p->chainage - length;
+    const double to = ahead ? p->chainage + length : p->chainage;
+
+    for (size_t i = standing_search(standings, p->span, from - SAME_PLACE);
+         i < standings->count; i++) {
+        const kent_standing *s = &standings->at[i];
+        if (s->span != p->span || s->chainage > to + SAME_PLACE) break;
+        const kent_fitting *f = &m->fittings[s->fitting];
+        if ((size_t)s->fitting == fitting || f->within_deflection) continue;
+        if (f->type == KENT_STRAIGHT) continue;
+        if (f->type != KENT_BEND) {
+            kent_notes_add(notes,
+                           "the restrained length reaches %s: restrain every joint up "
+                           "to it and treat both as one system",
+                           f->id);
+            return false;
+        }
+        kent_notes_add(notes,
+                       "restrained lengths meet at %s: restrain every joint between; "
+                       "the two are one system",
+                       f->id);
+    }
+    return true;
+}
+
+/* The first route index of the span's part whose chainage is not below x. */
+static size_t route_search(const kent_model *m, const kent_span *s, double x)
+{
+    size_t lo = s->route_first, hi = s->route_first + s->route_count;
+    const double start = m->chainage[s->route_first];
+
+    while (lo < hi) {
+        const size_t mid = lo + (hi - lo) / 2;
+        if (m->chainage[mid] - start < x) {
+            lo = mid + 1;
+        } else {
+            hi = mid;
+        }
+    }
+    return lo;
+}
+
+int kent_leg_sound(const kent_model *m, const kent_port *port, double *distance)
+{
+    const kent_span *span = &m->spans[port->span];
+    const kent_pipe *pipe = &m->pipes[span->pipe];
+    const double here = m->chainage[span->route_first] + port->chainage;
+    const bool ahead = port->sign > 0.0;
+    const size_t first = pipe->route_first, end = first + pipe->route_count;
+    size_t i =
+        route_search(m, span, port->chainage + (ahead ? SAME_PLACE : -SAME_PLACE));
+
+    *distance = ahead ? m->chainage[end - 1] - here : here - m->chainage[first];
+    /* ahead: the first point beyond; back: one after the first point before */
+    for (; ahead ? i < end : i > first; i = ahead ? i + 1 : i - 1) {
+        const size_t k = ahead ? i : i - 1;
+        if (!kent_soil_counts(kent_point_soil(m, m->route[k]))) continue;
+        *distance = fabs(m->chainage[k] - here);
+        return m->route[k];
+    }
+    return -1;
+}
+
+/* Whether the ground along the leg can be relied on at every point of it. */
+static bool leg_ground(const kent_model *m, const kent_port *p, double length,
+                       kent_notes *notes)
+{
+    const kent_span *span = &m->spans[p->span];
+    const bool ahead = p->sign > 0.0;
+    const double from = ahead ? p->chainage + SAME_PLACE : p->chainage - length;
+    const double to = ahead ? p->chainage + length : p->chainage - SAME_PLACE;
+    const size_t end = span->route_first + span->route_count;
+
+    for (size_t i = route_search(m, span, from); i < end; i++) {
+        if (m->chainage[i] - m->chainage[span->route_first] > to) break;
+        const kent_soil *soil = kent_point_soil(m, m->route[i]);
+        if (kent_soil_counts(soil)) continue;
+        kent_notes_add(notes,
+                       "the restrained length runs into ground at %s that gives no "
+                       "restraint: carry it through by as much again as lies there",
+                       m->points[m->route[i]].id);
+        return false;
+    }
+    return true;
+}
+
+bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t fitting,
+                   size_t port, double length, kent_notes *notes)
+{
+    const kent_fitting *f = &m->fittings[fitting];
+    const kent_port *p = &m->ports[f->port_first + port];
+    const kent_span *span = &m->spans[p->span];
+    const double there = p->sign > 0.0 ? span->length - p->chainage : p->chainage;
+
+    if (!leg_meets(m, standings, fitting, p, fmin(length, there), notes)) return false;
+    if (!leg_ground(m, p, fmin(length, there), notes)) return false;
+    if (length <= there + SAME_PLACE) return true;
+    const int node = span->node[p->sign > 0.0 ? 1 : 0];
+    kent_notes_add(
+        notes,
+        "the restrained length of %s is longer than the %s of pipe up to %s: "
+        "restrain every joint and anchor the rest there",
+        kent_say(m->units, KENT_LENGTH, length).s,
+        kent_say(m->units, KENT_LENGTH, there).s, m->points[m->nodes[node].point].id);
+    return false;
+}

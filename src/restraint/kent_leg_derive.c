@@ -1,0 +1,156 @@
+/* The restrained length's part of a hand calculation, one leg at a time. */
+#include "kent_holding_internal.h"
+#include "kent_side_internal.h"
+
+#include <stdio.h>
+
+/* What a metre of pipe weighs, empty and full, and the ground water it displaces. */
+static void derive_weight(const kent_holding_work *w, const kent_leg_work *k,
+                          kent_derivation *d)
+{
+    const kent_pipe *p = k->pipe;
+    const double bore = p->inside_diameter;
+
+    kent_derivation_put(d, "OD", p->outside_diameter, KENT_DIAMETER, KENT_GIVEN,
+                        "outside diameter of the leg's pipe");
+    kent_derivation_put(d, "H", k->trench.cover, KENT_LENGTH, KENT_GIVEN,
+                        "cover, ground to crown");
+    kent_derivation_put(d, "g", w->m->gravity, KENT_ACCELERATION, KENT_GIVEN,
+                        "gravity");
+    if (isnan(p->unit_mass)) {
+        kent_derivation_put(d, "e", p->wall, KENT_DIAMETER, KENT_GIVEN,
+                            "wall, nominal");
+        kent_derivation_put(d, "rp", p->material_density, KENT_DENSITY, KENT_CATALOGUE,
+                            "density of the wall");
+        kent_derivation_work(d, "Wp", k->pipe_weight, KENT_FORCE_PER_LENGTH,
+                             "pi*(OD - e)*e*rp*g", "11.1", "weight of the pipe");
+    } else {
+        kent_derivation_put(d, "Wp", k->pipe_weight, KENT_FORCE_PER_LENGTH,
+                            KENT_CATALOGUE, "weight of the pipe");
+    }
+    kent_derivation_put(d, "ID", bore, KENT_DIAMETER, KENT_GIVEN, "bore");
+    kent_derivation_put(d, "rho", w->m->water.density, KENT_DENSITY, KENT_COMPUTED,
+                        "density of the water");
+    kent_derivation_work(d, "Ww", k->trench.water_weight, KENT_FORCE_PER_LENGTH,
+                         "rho*g*pi*ID^2/4", "11.2", "weight of the water in it");
+    kent_derivation_put(d, "gs", k->soil->unit_weight, KENT_UNIT_WEIGHT,
+                        kent_soil_source(k->soil), "unit weight of the soil");
+    if (k->displaced <= 0.0) return;
+    kent_derivation_put(d, "gw", w->m->rules.water_unit_weight, KENT_UNIT_WEIGHT,
+                        KENT_CATALOGUE, "unit weight of ground water");
+    kent_derivation_work(d, "gs", k->trench.unit_weight, KENT_UNIT_WEIGHT, "gs - gw",
+                         "11.12", "unit weight of the soil under water");
+    kent_derivation_work(d, "Wb", k->displaced, KENT_FORCE_PER_LENGTH, "gw*pi*OD^2/4",
+                         "11.13", "weight of the ground water displaced");
+}
+
+static void derive_friction(const kent_leg_work *k, kent_derivation *d)
+{
+    const kent_source from = kent_soil_source(k->soil);
+    const kent_trench *t = &k->trench;
+    const double adhesion = k->grip.friction_whole - k->grip.friction; /* of half */
+    const double friction = k->bend ? k->grip.friction : k->grip.friction_whole;
+    const bool sticks = t->cohesion > 0.0;
+
+    kent_derivation_work(d, "We", k->grip.earth_load, KENT_FORCE_PER_LENGTH, "gs*H*OD",
+                         "11.3", "weight of the soil above");
+    kent_derivation_work(d, "W",
+                         2.0 * k->grip.earth_load + t->pipe_weight + t->water_weight,
+                         KENT_FORCE_PER_LENGTH,
+                         k->displaced > 0.0 ? "2*We + Wp + Ww - Wb" : "2*We + Wp + Ww",
+                         "11.4", "load on top and bottom of the pipe");
+    kent_derivation_put(d, "phi", t->friction_angle, KENT_ANGLE, from,
+                        "friction angle of the soil");
+    kent_derivation_put(d, "fphi", t->friction_ratio, KENT_RATIO, from,
+                        "friction angle on the pipe over it");
+    kent_derivation_put(d, "c", t->cohesion, KENT_STRESS, from, "cohesion");
+    if (sticks) {
+        kent_derivation_put(d, "fc", t->adhesion_ratio, KENT_RATIO, from,
+                            "adhesion on the pipe over cohesion");
+        kent_derivation_work(d, "Fc", k->bend ? adhesion : 2.0 * adhesion,
+                             KENT_FORCE_PER_LENGTH,
+                             k->bend ? "pi*OD/2*fc*c" : "pi*OD*fc*c", "11.5",
+                             k->bend ? "adhesion on half the perimeter"
+                                     : "adhesion on the whole perimeter");
+    }
+    kent_derivation_work(d, "Fs", friction, KENT_FORCE_PER_LENGTH,
+                         sticks ? "Fc + W*tan(fphi*phi)" : "W*tan(fphi*phi)", "11.5",
+                         "friction on the pipe");
+    if (k->sleeve >= 1.0) return;
+    kent_derivation_put(d, "kw", k->sleeve, KENT_RATIO, KENT_CATALOGUE,
+                        "sleeved pipe over bare pipe");
+    kent_derivation_work(d, "Fs", k->friction, KENT_FORCE_PER_LENGTH, "kw*Fs", "11.14",
+                         "friction on the sleeved pipe");
+}
+
+static void derive_bearing(const kent_leg_work *k, kent_derivation *d)
+{
+    const kent_trench *t = &k->trench;
+    const double stress = t->unit_weight * (t->cover + 0.5 * t->outside_diameter);
+
+    kent_derivation_work(d, "Kp", kent_rankine_passive(t->friction_angle), KENT_RATIO,
+                         "(1 + sin(phi))/(1 - sin(phi))", "10.18",
+                         "passive coefficient by Rankine");
+    kent_derivation_work(d, "sa", stress, KENT_STRESS, "gs*(H + OD/2)", "11.6",
+                         "weight of soil above the axis");
+    kent_derivation_work(
+        d, "Pp", kent_passive_pressure(t->friction_angle, t->cohesion, stress),
+        KENT_STRESS, "Kp*sa + 2*c*sqrt(Kp)", "11.6", "passive pressure at the axis");
+    kent_derivation_put(d, "Kn", t->passive_ratio, KENT_RATIO,
+                        kent_soil_source(k->soil),
+                        "share of it that this trench mobilises");
+    kent_derivation_work(d, "Rs", k->bearing, KENT_FORCE_PER_LENGTH, "Kn*Pp*OD", "11.7",
+                         "resistance of the trench side");
+}
+
+static void derive_length(const kent_holding_work *w, const kent_holding *h,
+                          const kent_leg_work *k, kent_derivation *d)
+{
+    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
+    char says[120];
+
+    (void)snprintf(says, sizeof says, "whole thrust, case '%s'", c->name);
+    kent_derivation_put(d, "T", kent_vec3_length(w->pull), KENT_FORCE, KENT_COMPUTED,
+                        says);
+    kent_derivation_put(d, "SF", k->factor, KENT_RATIO, KENT_CATALOGUE,
+                        "factor of this load case");
+    if (!k->bend) {
+        kent_derivation_work(d, "L", k->length, KENT_LENGTH, "SF*T/Fs", "11.10",
+                             "restrained length, by friction alone");
+        return;
+    }
+    kent_derivation_put(d, "theta", k->angle, KENT_ANGLE, KENT_COMPUTED,
+                        "turn of the bend in space");
+    kent_derivation_work(d, "S", k->force, KENT_FORCE, "T/(2*sin(theta/2))", "11.8",
+                         "pull along each leg");
+    kent_derivation_work(
+        d, "L", k->length, KENT_LENGTH,
+        k->bears ? "SF*S*tan(theta/2)/(Fs + Rs/2)" : "SF*S*tan(theta/2)/Fs", "11.9",
+        k->bears ? "restrained length" : "restrained length, by friction alone");
+}
+
+void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_port *p = &w->m->ports[w->fitting->port_first + leg->port];
+    kent_leg_work k;
+    char says[160];
+
+    if (kent_leg_prepare(w->m, w->fitting, leg->port, w->pull, w->pull_factor, &k)) {
+        return;
+    }
+    (void)snprintf(says, sizeof says, "Restrained length along %s%s%s", k.pipe->id,
+                   p->toward >= 0 ? " towards " : "",
+                   p->toward >= 0 ? w->m->points[p->toward].id : "");
+    kent_derivation_heading(d, says);
+    derive_weight(w, &k, d);
+    derive_friction(&k, d);
+    if (k.bears) derive_bearing(&k, d);
+    derive_length(w, h, &k, d);
+    if (leg->pipes <= 0) return;
+    kent_derivation_put(d, "lp", k.pipe->laying_length, KENT_LENGTH, KENT_GIVEN,
+                        "length of one pipe");
+    kent_derivation_work(d, "n", leg->pipes, KENT_RATIO,
+                         "ceil(L/lp - " KENT_SIDE_SLACK_TEXT ")", "11.11",
+                         "whole pipes with restrained joints");
+}

@@ -1,0 +1,187 @@
+#include "kent_holding_internal.h"
+#include "kent_said_internal.h"
+
+static const struct {
+    unsigned lack;
+    const char *key;
+} KEYS[] = {
+    {KENT_LACK_UNIT_WEIGHT, "unit_weight"},
+    {KENT_LACK_FRICTION_ANGLE, "friction_angle"},
+    {KENT_LACK_COHESION, "cohesion"},
+    {KENT_LACK_FRICTION_RATIO, "friction_ratio"},
+    {KENT_LACK_ADHESION_RATIO, "adhesion_ratio"},
+    {KENT_LACK_PASSIVE_RATIO, "passive_ratio"},
+};
+
+/* "restrained joints over 24.40 m on each leg", or why there are none. */
+static void joints_offer(const kent_holding_work *w, const kent_holding *h,
+                         kent_text *t)
+{
+    bool fits = h->leg_count > 0;
+
+    for (size_t i = 0; i < h->leg_count; i++) {
+        fits = fits && h->legs[i].fits;
+    }
+    if (h->leg_count == 0) {
+        kent_text_add(t, "restrained joints, once their length can be worked out");
+        return;
+    }
+    kent_text_add(t, "restrained joints over %s %s%s",
+                  kent_say(w->m->units, KENT_LENGTH, h->restrained_length).s,
+                  kent_leg_rule_of(w->fitting->type)->says,
+                  fits ? "" : " and beyond what they meet");
+}
+
+static void refuse_face(const kent_holding_work *w, const kent_holding *h, kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const double sideways = w->demand.load[KENT_SIDEWAYS];
+    const double limit = kent_face_height_limit(&w->m->rules, kent_site_axis(&w->site));
+    const double cover = kent_face_cover_needed(&w->m->rules, &w->site, sideways);
+    const double bearing = kent_face_bearing_needed(&w->m->rules, &w->site, sideways);
+
+    kent_text_add(t,
+                  "no block: a face of %s does not fit under the greatest height of "
+                  "%s at this depth; ",
+                  kent_say(units, KENT_AREA, h->block.bearing_area + w->site.hole).s,
+                  kent_say(units, KENT_LENGTH, limit).s);
+    if (!isnan(cover)) {
+        kent_text_add(t, "a cover of %s would serve, ",
+                      kent_say(units, KENT_LENGTH, cover).s);
+    }
+    if (!isnan(bearing)) {
+        kent_text_add(t, "or ground that bears %s, ",
+                      kent_say(units, KENT_STRESS, bearing).s);
+    }
+    kent_text_add(t, "or ");
+    joints_offer(w, h, t);
+}
+
+/* How far it is to ground that can be relied on, along each pipe of the fitting. */
+static void refuse_soil(const kent_holding_work *w, kent_text *t)
+{
+    const kent_model *m = w->m;
+    const kent_fitting *f = w->fitting;
+    const char *sep = "carry the restraint ";
+
+    kent_text_add(t, "the soil here, '%s', gives no restraint: ", w->soil->id);
+    for (size_t k = 0; k < f->port_count; k++) {
+        const kent_port *p = &m->ports[f->port_first + k];
+        double distance = NAN;
+        if (p->span < 0 || p->toward < 0) continue;
+        const int sound = kent_leg_sound(m, p, &distance);
+        if (distance <= 0.0) continue; /* nothing lies that way */
+        const kent_said far = kent_say(m->units, KENT_LENGTH, distance);
+        const char *toward = m->points[p->toward].id;
+        if (sound >= 0) {
+            kent_text_add(t, "%s%s towards %s into the %s at %s", sep, far.s, toward,
+                          kent_point_soil(m, sound)->id, m->points[sound].id);
+        } else {
+            kent_text_add(t,
+                          "%smore than the %s of pipe towards %s (no sound ground "
+                          "along it)",
+                          sep, far.s, toward);
+        }
+        sep = " and ";
+    }
+    kent_text_add(t, "%ssupport the fitting on piles", sep[0] == ' ' ? ", or " : "");
+}
+
+static void refuse_block(const kent_holding_work *w, const kent_holding *h,
+                         kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const kent_rules *rules = &w->m->rules;
+
+    switch (w->fault) {
+    case KENT_FAULT_NONE:
+        return;
+    case KENT_FAULT_SOIL_UNSTATED:
+        kent_text_add(t, "no block: the soil is not stated; give ground.soil, or soil "
+                         "where this stands");
+        return;
+    case KENT_FAULT_COVER_UNSTATED:
+        kent_text_add(t, "no block: the cover is not stated; give ground.cover, or "
+                         "cover where this stands");
+        return;
+    case KENT_FAULT_SHALLOW:
+        kent_text_add(t,
+                      "no block: a cover of %s is less than the least, %s; lay the "
+                      "main that deep, or ",
+                      kent_say(units, KENT_LENGTH, w->site.cover).s,
+                      kent_say(units, KENT_LENGTH, rules->least_cover).s);
+        break;
+    case KENT_FAULT_VOLUME:
+        kent_text_add(t,
+                      "no block: it would be larger than the %s that these rules let "
+                      "be sized; better ground, a structure of its own, or ",
+                      kent_say(units, KENT_VOLUME, rules->largest_volume).s);
+        break;
+    case KENT_FAULT_FACE:
+        refuse_face(w, h, t);
+        return;
+    case KENT_FAULT_SOIL:
+        refuse_soil(w, t);
+        return;
+    }
+    joints_offer(w, h, t);
+}
+
+/* What keeps lengths from being given, unless the ground itself does. */
+static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
+{
+    kent_text t = {0};
+
+    for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
+        if (!(w->lack & KEYS[i].lack)) continue;
+        kent_text_add(&t, "%s%s", t.length ? ", " : "", KEYS[i].key);
+    }
+    if (t.length > 0) {
+        kent_notes_add(notes, "no restrained length: soil '%s' lacks %s", w->soil->id,
+                       kent_text_of(&t));
+    }
+    if (w->lack & KENT_LACK_COVER) {
+        kent_notes_add(notes, "no restrained length: the cover is not stated");
+    }
+    if (w->lack & KENT_LACK_PIPE_MASS) {
+        kent_notes_add(notes,
+                       "no restrained length: the mass of the pipe is not known; "
+                       "give its pipe_class, or "
+                       "its material and wall_thickness");
+    }
+    if (w->lack & KENT_LACK_PIPE) {
+        kent_notes_add(notes, "no restrained length: this fitting stands in no pipe of "
+                              "the case");
+    }
+    if ((w->lack & KENT_LACK_SOIL) && !w->soil && w->fault == KENT_FAULT_NONE) {
+        kent_notes_add(notes, "no restrained length: the soil is not stated");
+    }
+    notes->failed = notes->failed || t.failed;
+    kent_text_clear(&t);
+}
+
+void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
+{
+    const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
+    const bool soft = w->soil && !kent_soil_counts(w->soil);
+    kent_text t = {0};
+
+    if (h->chosen == KENT_NO_RESTRAINT) {
+        kent_text_add(&t, "restraint \"none\" is asked for: nothing holds %s",
+                      kent_say(w->m->units, KENT_FORCE, h->design_thrust).s);
+    } else if (joints && !h->held && soft) {
+        refuse_soil(w, &t);
+    } else if (joints && !h->held && h->leg_count == 0 && w->lack == 0) {
+        kent_text_add(&t, "no leg of this fitting has joints that could be restrained");
+    } else if (!joints) {
+        refuse_block(w, h, &t);
+    }
+    if (t.length > 0) kent_notes_add(&h->cautions, "%s", kent_text_of(&t));
+    h->cautions.failed = h->cautions.failed || t.failed;
+    kent_text_clear(&t);
+
+    refuse_lengths(w, &h->cautions);
+    for (size_t i = 0; i < w->met.count && (joints || !h->held); i++) {
+        kent_notes_add(&h->cautions, "%s", w->met.text[i]);
+    }
+}

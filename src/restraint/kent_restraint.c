@@ -1,0 +1,135 @@
+#include "kent_restraint.h"
+#include "kent_holding_internal.h"
+
+#include <assert.h>
+#include <stdlib.h>
+
+static const double PI = 3.14159265358979323846;
+
+static kent_site site_of(const kent_fitting *f, const kent_soil *soil)
+{
+    const bool through =
+        f->type == KENT_REDUCER || (f->type == KENT_VALVE && f->port_count >= 2);
+    const double od = f->outside_diameter;
+    kent_site site = {
+        .diameter = od,
+        .cover = f->cover,
+        .water_table = isnan(f->water_table) ? INFINITY : f->water_table,
+        .allowable = NAN,
+        .vertical = NAN,
+        .hole = through ? 0.25 * PI * od * od : 0.0,
+    };
+
+    if (soil) {
+        site.allowable = soil->allowable_bearing;
+        site.vertical =
+            isnan(soil->vertical_bearing) ? site.allowable : soil->vertical_bearing;
+    }
+    return site;
+}
+
+/* The outside of the pipe, or where nobody knows it what the joint seals on. */
+static double fitting_diameter(const kent_model *m, const kent_fitting *f)
+{
+    double widest = f->outside_diameter;
+
+    for (size_t k = 0; k < f->port_count && !(widest > 0.0); k++) {
+        widest = m->ports[f->port_first + k].seal_diameter;
+    }
+    return widest;
+}
+
+static void holding_start(kent_holding *h, const kent_fitting *f)
+{
+    *h = (kent_holding){
+        .governing = -1,
+        .sense = KENT_RESULTANT,
+        .runner_up = -1,
+        .runner_up_load = NAN,
+        .by_sense = {-1, -1, -1, -1},
+        .chosen = f->restraint,
+        .design_thrust = NAN,
+        .factor_asked = NAN,
+        .block = kent_block_none(),
+        .factor_reached = NAN,
+        .utilisation = NAN,
+        .restrained_length = NAN,
+    };
+}
+
+static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
+                                    kent_error *err)
+{
+    kent_holding_find(w, h);
+    if (!h->needs_nothing) {
+        kent_holding_size(w, h);
+        kent_holding_legs(w, h);
+        kent_holding_refuse(w, h);
+    }
+    kent_holding_caution(w, h);
+    kent_holding_derive(w, h);
+    const bool lost = h->cautions.failed || h->derivation.failed || w->met.failed;
+    kent_notes_clear(&w->met);
+    return lost ? kent_error_nomem(err) : KENT_OK;
+}
+
+kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,
+                                kent_restraints **out, kent_error *err)
+{
+    kent_status status = KENT_E_NOMEM;
+    kent_restraints *r = kent_alloc(1, sizeof *r);
+    kent_standings standings = {0};
+
+    assert(loads->fitting_count == m->fitting_count);
+    if (r) r->fittings = kent_alloc(m->fitting_count, sizeof *r->fittings);
+    if (!r || !r->fittings) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
+    status = kent_standings_find(m, &standings, err);
+    if (status != KENT_OK) goto done;
+
+    for (; r->fitting_count < m->fitting_count; r->fitting_count++) {
+        const size_t i = r->fitting_count;
+        kent_fitting fitting = m->fittings[i];
+        kent_holding *h = &r->fittings[i];
+        fitting.outside_diameter = fitting_diameter(m, &fitting);
+        const kent_soil *soil = fitting.soil >= 0 ? &m->soils[fitting.soil] : NULL;
+        kent_holding_work work = {
+            .m = m,
+            .fitting = &fitting,
+            .index = i,
+            .loads = &loads->fittings[i],
+            .standings = &standings,
+            .soil = soil,
+            .site = site_of(&fitting, soil),
+        };
+        holding_start(h, &fitting);
+        status = holding_work_out(&work, h, err);
+        if (status != KENT_OK) {
+            r->fitting_count++; /* this one holds notes too */
+            goto done;
+        }
+        r->concrete += h->block.volume + h->block.face_volume;
+        if (!h->held && !h->needs_nothing && h->chosen != KENT_NO_RESTRAINT) {
+            r->not_held++;
+        }
+    }
+    *out = r;
+    r = NULL; /* handed over */
+done:
+    kent_standings_clear(&standings);
+    kent_restraints_free(r);
+    return status;
+}
+
+void kent_restraints_free(kent_restraints *r)
+{
+    if (!r) return;
+    for (size_t i = 0; i < r->fitting_count; i++) {
+        kent_notes_clear(&r->fittings[i].cautions);
+        kent_derivation_clear(&r->fittings[i].derivation);
+    }
+    free(r->fittings);
+    free(r);
+}
