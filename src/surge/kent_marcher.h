@@ -30,7 +30,10 @@ typedef struct kent_marcher kent_marcher;
 
 /* scenario -1: no events, duration 0 s of its own. watches are copied. The steady state
  * is the first instant: the first advance returns t = 0. block: most instants one
- * advance may return, 1 .. 1024. */
+ * advance may return, 1 .. 1024. m must outlive the marcher; s and grid need not. Fails
+ * with KENT_E_INPUT (a watch off its span, a reach too long for its friction: place and
+ * reaches needed are said, KENTLEDGE_SIMD names what the processor lacks) or
+ * KENT_E_NOMEM. */
 kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
                              const kent_grid *grid, int scenario,
                              const kent_watch *watches, size_t watch_count,

@@ -1,0 +1,130 @@
+#include "kent_waves_internal.h"
+
+#include <float.h>
+#include <stdlib.h>
+#include <string.h>
+
+const double KENT_EXPLICIT_LIMIT = 0.25;
+
+enum { SLACK_LEAST = 64, SLACK_MOST = 65536 }; /* places */
+
+/* Explicit spans first, each kind in the model's order. */
+static void place_spans(kent_waves *w, const bool *implicit)
+{
+    size_t next = 0;
+    for (int pass = 0; pass < 2; pass++) {
+        for (size_t s = 0; s < w->span_count; s++) {
+            if (implicit[s] != (pass == 1)) continue;
+            w->first[s] = next;
+            next += w->reaches[s] + 1;
+        }
+        if (pass == 0) w->explicit_total = next;
+    }
+}
+
+kent_status kent_waves_new(const kent_model *m, const kent_grid *grid,
+                           const bool *implicit, kent_waves **out, kent_error *err)
+{
+    kent_status status = KENT_E_NOMEM;
+    const size_t spans = m->span_count, nodes = grid->node_total;
+    kent_waves *w = kent_alloc(1, sizeof *w);
+
+    if (!w) goto done;
+    w->node_total = nodes;
+    w->span_count = spans;
+    w->slack = nodes / 4;
+    if (w->slack < SLACK_LEAST) w->slack = SLACK_LEAST;
+    if (w->slack > SLACK_MOST) w->slack = SLACK_MOST;
+    w->first = kent_alloc(spans, sizeof *w->first);
+    w->reaches = kent_alloc(spans, sizeof *w->reaches);
+    w->impedance = kent_alloc(spans, sizeof *w->impedance);
+    w->k = kent_alloc(nodes, sizeof *w->k);
+    w->twice_highest = kent_alloc(nodes, sizeof *w->twice_highest);
+    w->twice_lowest = kent_alloc(nodes, sizeof *w->twice_lowest);
+    w->p_store = kent_alloc(nodes + w->slack, sizeof *w->p_store);
+    w->m_store = kent_alloc(nodes + w->slack, sizeof *w->m_store);
+    if (!w->first || !w->reaches || !w->impedance || !w->k || !w->twice_highest ||
+        !w->twice_lowest || !w->p_store || !w->m_store) {
+        goto done;
+    }
+    w->p = w->p_store + w->slack;
+    w->m = w->m_store;
+    for (size_t s = 0; s < spans; s++) {
+        w->reaches[s] = (size_t)grid->reaches[s];
+        w->impedance[s] =
+            grid->wave_speed_used[s] / (m->gravity * m->spans[s].area); /* 07.4 */
+    }
+    place_spans(w, implicit);
+    *out = w;
+    w = NULL;
+    status = KENT_OK;
+done:
+    kent_waves_free(w);
+    return status == KENT_OK ? KENT_OK : kent_error_nomem(err);
+}
+
+void kent_waves_free(kent_waves *w)
+{
+    if (!w) return;
+    free(w->first);
+    free(w->reaches);
+    free(w->impedance);
+    free(w->k);
+    free(w->twice_highest);
+    free(w->twice_lowest);
+    free(w->p_store);
+    free(w->m_store);
+    free(w);
+}
+
+void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flow)
+{
+    const size_t reaches = w->reaches[span];
+    const double bq = w->impedance[span] * flow;
+    for (size_t i = 0; i <= reaches; i++) {
+        const size_t node = w->first[span] + i;
+        const double share = (double)i / (double)reaches;
+        const double h = (1.0 - share) * head[0] + share * head[1];
+        w->p[node] = h + bq;
+        w->m[node] = h - bq;
+        w->twice_highest[node] = w->twice_lowest[node] = w->p[node] + w->m[node];
+    }
+}
+
+/* 07.8: the node to the right receives p, the node to the left m. */
+static void move_on(kent_waves *w)
+{
+    const size_t bytes = w->node_total * sizeof *w->p;
+    if (w->p == w->p_store) {
+        w->p = w->p_store + w->slack;
+        memmove(w->p, w->p_store, bytes);
+    }
+    if (w->m == w->m_store + w->slack) {
+        memmove(w->m_store, w->m, bytes);
+        w->m = w->m_store;
+    }
+    w->p -= 1;
+    w->m += 1;
+}
+
+int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel)
+{
+    const size_t e = w->explicit_total;
+    int64_t beyond = kernel->explicit_sweep(e, KENT_EXPLICIT_LIMIT, w->k, w->p, w->m,
+                                            w->twice_highest, w->twice_lowest);
+    beyond +=
+        kernel->implicit_sweep(w->node_total - e, DBL_MAX, w->k + e, w->p + e, w->m + e,
+                               w->twice_highest + e, w->twice_lowest + e);
+    if (beyond == 0) move_on(w); /* else the culprits stay where they can be found */
+    return beyond;
+}
+
+double kent_waves_head(const kent_waves *w, size_t node)
+{
+    return 0.5 * (w->p[node] + w->m[node]);
+}
+
+double kent_waves_flow(const kent_waves *w, size_t span, size_t node)
+{
+    return (w->p[node] - w->m[node]) / (2.0 * w->impedance[span]);
+}

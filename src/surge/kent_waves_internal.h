@@ -1,0 +1,45 @@
+/* Every node's arriving characteristics, all spans end to end in one array each.
+ *
+ * Only surge/ knows this layout. Spans whose friction is explicit come first, so that
+ * each kind is one sweep. p and m move by one place a step inside stores with slack;
+ * when the slack is used up they are moved back. */
+#ifndef KENT_WAVES_INTERNAL_H
+#define KENT_WAVES_INTERNAL_H
+
+#include "kent_grid.h"
+#include "kent_kernel_internal.h"
+
+typedef struct kent_waves {
+    size_t node_total, span_count;
+    size_t
+        explicit_total; /* nodes of the spans swept explicitly: 0 .. explicit_total */
+    size_t *first;      /* [span_count] a span's first node */
+    size_t *reaches;    /* [span_count] */
+    double *impedance;  /* [span_count] B = a/(g A), s/m2 */
+    double *k;          /* [node_total] 1/m, friction: 07.7 */
+    double *twice_highest, *twice_lowest; /* [node_total] m */
+    double *p, *m;                        /* [node_total] m, inside their stores */
+    double *p_store, *m_store;            /* [node_total + slack] */
+    size_t slack;
+} kent_waves;
+
+/* Largest R|Q|/(2B) of an explicit reach, beyond which friction overshoots (07.9). */
+extern const double KENT_EXPLICIT_LIMIT;
+
+/* implicit: [span_count] which spans are swept point-implicitly. */
+kent_status kent_waves_new(const kent_model *m, const kent_grid *grid,
+                           const bool *implicit, kent_waves **out, kent_error *err);
+void kent_waves_free(kent_waves *w);
+
+/* A straight grade line between two heads (m) and one flow (m3/s) along a span. */
+void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flow);
+
+/* Friction, envelopes and the move to the neighbours. Returns the number of nodes left
+ * untouched because they were beyond the limit (or not a number). */
+int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel);
+
+/* m and m3/s at a node. */
+double kent_waves_head(const kent_waves *w, size_t node);
+double kent_waves_flow(const kent_waves *w, size_t span, size_t node);
+
+#endif

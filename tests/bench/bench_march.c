@@ -1,0 +1,106 @@
+/* Races the engine against the textbook program, time loops alone, in one run. */
+#include "kent_check.h"
+#include "kent_marcher.h"
+#include "network.h"
+#include "textbook.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+#include <time.h>
+
+enum { RUNS = 9, STEPS = 2000, BLOCK = 250 };
+
+static double seconds(void)
+{
+    struct timespec t;
+    (void)clock_gettime(CLOCK_MONOTONIC, &t);
+    return (double)t.tv_sec + 1e-9 * (double)t.tv_nsec;
+}
+
+static int by_size(const void *a, const void *b)
+{
+    const double x = *(const double *)a, y = *(const double *)b;
+    return (x > y) - (x < y);
+}
+
+static double time_engine(const kent_model *m, const kent_steady *s, const kent_grid *g,
+                          const char **kernel)
+{
+    const kent_watch watch = {0, 0.0};
+    kent_marcher *k = NULL;
+    kent_trace trace;
+    kent_error err = {0};
+    if (kent_marcher_new(m, s, g, 0, &watch, 1, BLOCK, &k, &err) != KENT_OK) {
+        fail_msg("%s", err.what);
+    }
+    *kernel = kent_marcher_kernel(k);
+    (void)kent_marcher_advance(k, 1, &trace, &err);
+    const double start = seconds();
+    for (int done = 0; done < STEPS; done += BLOCK) {
+        assert_int_equal(kent_marcher_advance(k, BLOCK, &trace, &err), BLOCK);
+    }
+    const double took = seconds() - start;
+    kent_marcher_free(k);
+    return took;
+}
+
+static double time_textbook(const kent_model *m, const kent_steady *s,
+                            const kent_grid *g)
+{
+    textbook *t = textbook_new(m, s, g, 0, false);
+    assert_non_null(t);
+    const double start = seconds();
+    textbook_run(t, STEPS);
+    const double took = seconds() - start;
+    textbook_free(t);
+    return took;
+}
+
+static void report(const char *what, double *took, size_t nodes)
+{
+    const double scale = 1e9 / ((double)nodes * STEPS);
+    qsort(took, RUNS, sizeof *took, by_size);
+    (void)printf("%-28s median %7.3f  least %7.3f  ns per node and step\n", what,
+                 took[RUNS / 2] * scale, took[0] * scale);
+}
+
+static void race(void **state)
+{
+    (void)state;
+    kent_build b = network_build();
+    kent_steady *s = NULL;
+    kent_grid *g = NULL;
+    kent_error err = {0};
+    const char *kernel = "";
+    double engine[RUNS], plain[RUNS], ratio[RUNS];
+
+    if (kent_steady_solve(b.model, &s, &err) != KENT_OK ||
+        kent_grid_plan(b.model, 20.0, &g, &err) != KENT_OK) {
+        fail_msg("%s", err.what);
+    }
+    for (int i = 0; i < RUNS;
+         i++) { /* turn about, so that both meet the same weather */
+        engine[i] = time_engine(b.model, s, g, &kernel);
+        plain[i] = time_textbook(b.model, s, g);
+        ratio[i] = plain[i] / engine[i];
+    }
+    (void)printf("%zu spans, %zu nodes, %zu where spans meet; %d steps, envelopes on; "
+                 "kernel %s; %d runs each\n",
+                 b.model->span_count, g->node_total, b.model->node_count, STEPS, kernel,
+                 RUNS);
+    report("engine", engine, g->node_total);
+    report("textbook program, -O2", plain, g->node_total);
+    qsort(ratio, RUNS, sizeof *ratio, by_size);
+    (void)printf("%-28s median %7.2f  least %7.2f  (must be at least 5)\n",
+                 "textbook over engine", ratio[RUNS / 2], ratio[0]);
+    assert_true(ratio[RUNS / 2] >= 5.0);
+    kent_grid_free(g);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {cmocka_unit_test(race)};
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
