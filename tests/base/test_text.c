@@ -1,0 +1,91 @@
+#include "kent_text.h"
+#include "kent_alloc_fail.h"
+#include "kent_check.h"
+
+#include <string.h>
+
+static void pieces_stand_one_after_another(void **state)
+{
+    (void)state;
+    kent_text t = {0};
+    assert_string_equal(kent_text_of(&t), "");
+    kent_text_add(&t, "%s is %d mm", "bore", 600);
+    kent_text_add(&t, "%s", "; ");
+    kent_text_add(&t, "%.3f m", 0.6);
+    assert_string_equal(kent_text_of(&t), "bore is 600 mm; 0.600 m");
+    assert_int_equal(t.length, strlen(t.s));
+    kent_text_reset(&t);
+    assert_string_equal(kent_text_of(&t), "");
+    kent_text_add(&t, "again");
+    assert_string_equal(kent_text_of(&t), "again");
+    kent_text_clear(&t);
+    kent_text_clear(&t); /* twice is safe */
+    assert_false(t.failed);
+}
+
+static void a_long_text_is_whole(void **state)
+{
+    (void)state;
+    kent_text t = {0};
+    for (int i = 0; i < 10000; i++)
+        kent_text_add(&t, "%04d", i);
+    assert_int_equal(t.length, 40000);
+    assert_memory_equal(t.s + 4 * 9876, "9876", 4);
+    kent_text_clear(&t);
+}
+
+static int write_two_lines(void *context)
+{
+    kent_text t = {0};
+    (void)context;
+    for (int i = 0; i < 100; i++)
+        kent_text_add(&t, "line %d\n", i);
+    const bool failed = t.failed;
+    /* A text that failed once stays without what came later: no hole in it. */
+    if (failed && t.s) assert_int_equal(strncmp(t.s, "line 0\n", 7), 0);
+    kent_text_clear(&t);
+    return failed;
+}
+
+static void a_failed_allocation_is_remembered(void **state)
+{
+    (void)state;
+    assert_true(kent_allocations_needed(write_two_lines, NULL) > 1);
+}
+
+static void columns_count_code_points_but_no_combining_marks(void **state)
+{
+    (void)state;
+    assert_int_equal(kent_text_columns(""), 0);
+    assert_int_equal(kent_text_columns("DN 600"), 6);
+    assert_int_equal(kent_text_columns("22.5\xC2\xB0"), 5);          /* degree sign */
+    assert_int_equal(kent_text_columns("\xE2\x88\x91 \xCF\x81"), 3); /* sum, rho */
+    assert_int_equal(kent_text_columns("e\xCC\x81"), 1);             /* e and accent */
+    assert_int_equal(kent_text_columns("\xF0\x9F\x92\xA7"), 1);      /* four bytes */
+    assert_int_equal(kent_text_columns("ab\xC3"), 3);                /* cut short */
+}
+
+static void distance_is_the_number_of_edits(void **state)
+{
+    (void)state;
+    assert_int_equal(kent_text_distance("bore", "bore"), 0);
+    assert_int_equal(kent_text_distance("", "bore"), 4);
+    assert_int_equal(kent_text_distance("bore", "bores"), 1);
+    assert_int_equal(kent_text_distance("lenght", "length"), 2);
+    assert_int_equal(kent_text_distance("kitten", "sitting"), 3); /* Levenshtein's own
+                                                                     textbook pair */
+    assert_int_equal(kent_text_distance("valve", "vlave"),
+                     kent_text_distance("vlave", "valve"));
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(pieces_stand_one_after_another),
+        cmocka_unit_test(a_long_text_is_whole),
+        cmocka_unit_test(a_failed_allocation_is_remembered),
+        cmocka_unit_test(columns_count_code_points_but_no_combining_marks),
+        cmocka_unit_test(distance_is_the_number_of_edits),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
