@@ -7,7 +7,8 @@
 typedef enum kent_stop {
     KENT_STOP_CONVERGED,
     KENT_STOP_STALLED, /* the line search found no better point */
-    KENT_STOP_LIMIT    /* too many iterations */
+    KENT_STOP_LIMIT,   /* too many iterations */
+    KENT_STOP_SINGULAR /* the equations have no single answer */
 } kent_stop;
 
 typedef struct kent_steady_report {
@@ -16,12 +17,13 @@ typedef struct kent_steady_report {
     double worst_imbalance; /* m3/s, largest net inflow at a node */
     int worst_node;         /* where; -1: no free node */
     double worst_head_gap;  /* m, largest head equation left open */
-    int worst_span;         /* where; -1 */
+    int worst_span;         /* where; -1: at a device, or no span */
 } kent_steady_report;
 
 typedef struct kent_steady {
     char id[KENT_ID];       /* of the state: "normal" */
-    double *node_head;      /* [node_count] m, piezometric */
+    double *node_head;      /* [node_count] m, piezometric; at a fixed level that of the
+                               pipe just inside: less (1 + loss) V2/2g of what flows out */
     double *span_flow;      /* [span_count] m3/s, positive from node[0] to node[1] */
     double *valve_flow;     /* [valve_count] m3/s, positive from node[0] */
     double *valve_capacity; /* [valve_count] m^2.5/s at full opening; found where the
@@ -41,7 +43,8 @@ void kent_steady_free(kent_steady *s);
 double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
                         double chainage);
 
-/* m: the highest fixed level that a node is connected to with every valve open. */
+/* m: the highest fixed level that a node is connected to with every valve open,
+ * whatever flows. NAN: none, or no memory to look for it. */
 double kent_static_level(const kent_model *m, int node);
 
 #endif

@@ -1,0 +1,39 @@
+#include "kent_parts_internal.h"
+
+/* The node that stands for n's part; shortens the way for the next question. */
+static int root(int *part, int n)
+{
+    while (part[n] != n) {
+        part[n] = part[part[n]];
+        n = part[n];
+    }
+    return n;
+}
+
+static void join(int *part, int a, int b)
+{
+    const int ra = root(part, a);
+    const int rb = root(part, b);
+    if (ra < rb) {
+        part[rb] = ra;
+    } else {
+        part[ra] = rb;
+    }
+}
+
+void kent_parts_find(const kent_model *m, const bool *passes, int *part)
+{
+    for (size_t n = 0; n < m->node_count; n++)
+        part[n] = (int)n;
+    for (size_t e = 0; e < m->span_count; e++) {
+        join(part, m->spans[e].node[0], m->spans[e].node[1]);
+    }
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_valve *v = &m->valves[i];
+        if (v->node[1] >= 0 && (!passes || passes[i])) {
+            join(part, v->node[0], v->node[1]);
+        }
+    }
+    for (size_t n = 0; n < m->node_count; n++)
+        part[n] = root(part, (int)n);
+}

@@ -1,0 +1,13 @@
+/* Which nodes water can pass between: the connected parts of a network. */
+#ifndef KENT_PARTS_INTERNAL_H
+#define KENT_PARTS_INTERNAL_H
+
+#include "kent_model.h"
+
+#include <stdbool.h>
+
+/* part: [node_count], written: nodes of one part carry the same number, that of one of
+ * them. passes: [valve_count] which in-line valves join their two sides; NULL: all. */
+void kent_parts_find(const kent_model *m, const bool *passes, int *part);
+
+#endif

@@ -1,0 +1,348 @@
+#include "kent_steady.h"
+#include "kent_equations_internal.h"
+#include "kent_newton_internal.h"
+#include "kent_outlet_internal.h"
+#include "kent_parts_internal.h"
+
+#include <assert.h>
+#include <math.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+enum {
+    ROUNDS_TOGETHER = 30, /* rounds in which every contradicted outflow moves */
+    ROUNDS = 300          /* and then one at a time, to this many in all */
+};
+
+void kent_steady_free(kent_steady *s)
+{
+    if (!s) return;
+    free(s->node_head);
+    free(s->span_flow);
+    free(s->valve_flow);
+    free(s->valve_capacity);
+    free(s->outflow);
+    free(s);
+}
+
+static kent_steady *steady_new(const kent_model *m)
+{
+    kent_steady *s = kent_alloc(1, sizeof *s);
+    if (!s) return NULL;
+    (void)snprintf(s->id, sizeof s->id, "normal");
+    s->node_head = kent_alloc(m->node_count, sizeof *s->node_head);
+    s->span_flow = kent_alloc(m->span_count, sizeof *s->span_flow);
+    s->valve_flow = kent_alloc(m->valve_count, sizeof *s->valve_flow);
+    s->valve_capacity = kent_alloc(m->valve_count, sizeof *s->valve_capacity);
+    s->outflow = kent_alloc(m->outflow_count, sizeof *s->outflow);
+    s->report = (kent_steady_report){
+        .stop = KENT_STOP_CONVERGED, .worst_node = -1, .worst_span = -1};
+    if (!s->node_head || !s->span_flow || !s->valve_flow || !s->valve_capacity ||
+        !s->outflow) {
+        kent_steady_free(s);
+        return NULL;
+    }
+    return s;
+}
+
+/* "mains.cfg:42" of a place; empty where nothing is known. */
+static void place_text(const kent_model *m, kent_place place, char *text, size_t size)
+{
+    text[0] = '\0';
+    if (place.file < 0 || (size_t)place.file >= m->file_count) return;
+    (void)snprintf(text, size, "%s:%d", m->files[place.file], place.line);
+}
+
+static const char *node_name(const kent_model *m, int node)
+{
+    return m->points[m->nodes[node].point].id;
+}
+
+/* ---- what cannot be solved, whatever the flows -------------------------------------
+ */
+
+/* Share of the full capacity at the steady opening. */
+static double valve_share(const kent_valve *v)
+{
+    return kent_valve_relative_capacity(&v->curve, v->opening);
+}
+
+static kent_status check_valve_flows(const kent_model *m, kent_error *err)
+{
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_valve *v = &m->valves[i];
+        char where[160];
+        if (!isnan(v->capacity)) continue;
+        if (v->flow != 0.0 && isfinite(v->flow) && valve_share(v) > 0.0) continue;
+        place_text(m, v->place, where, sizeof where);
+        return kent_error_set(err, KENT_E_INPUT, where,
+                              "the coefficient of valve %s cannot be found from a flow "
+                              "of %g m3/s at an opening of %g; give a flow that passes "
+                              "it, or its loss, kv or cv",
+                              v->id, v->flow, v->opening);
+    }
+    return KENT_OK;
+}
+
+/* Marks the parts whose heads something fixes: a fixed level, or a discharging valve
+ * that passes what it will. */
+static void mark_known(const kent_equations *eq, const int *part, bool *known)
+{
+    const kent_model *m = eq->model;
+    for (size_t n = 0; n < eq->nodes; n++) {
+        if (eq->fixed_level[n] >= 0) known[part[n]] = true;
+    }
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_link *link = &eq->link[i];
+        if (link->law == KENT_LINK_LOSS && link->node[1] < 0) {
+            known[part[link->node[0]]] = true;
+        }
+    }
+}
+
+/* Says why the head at a node is not known: the first valve at its part that does not
+ * pass on a head. */
+static kent_status tell_unknown(const kent_equations *eq, const int *part, size_t n,
+                                kent_error *err)
+{
+    const kent_model *m = eq->model;
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_valve *v = &m->valves[i];
+        const bool here = part[v->node[0]] == part[n] ||
+                          (v->node[1] >= 0 && part[v->node[1]] == part[n]);
+        char where[160];
+        if (!here || eq->link[i].law != KENT_LINK_FLOW) continue;
+        place_text(m, v->place, where, sizeof where);
+        return kent_error_set(
+            err, KENT_E_INPUT, where,
+            "nothing fixes the head at point %s: only valve %s leads there, and it %s; "
+            "%s",
+            node_name(m, (int)n), v->id,
+            isnan(v->capacity) ? "is given by its flow" : "is closed",
+            isnan(v->capacity)
+                ? "give its loss, kv or cv instead, or a fixed level there"
+                : "open it, or give a fixed level there");
+    }
+    return kent_error_set(err, KENT_E_INPUT, "",
+                          "nothing fixes the head at point %s; connect it to a fixed "
+                          "level",
+                          node_name(m, (int)n));
+}
+
+/* Every node must be joined to a known head by spans and valves that lose head. */
+static kent_status check_known(const kent_equations *eq, kent_error *err)
+{
+    kent_status status = KENT_OK;
+    const kent_model *m = eq->model;
+    int *part = kent_alloc(eq->nodes, sizeof *part);
+    bool *known = kent_alloc(eq->nodes, sizeof *known);
+    bool *passes = kent_alloc(m->valve_count, sizeof *passes);
+
+    if (!part || !known || !passes) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
+    for (size_t i = 0; i < m->valve_count; i++) {
+        passes[i] = eq->link[i].law == KENT_LINK_LOSS;
+    }
+    kent_parts_find(m, passes, part);
+    mark_known(eq, part, known);
+    for (size_t n = 0; n < eq->nodes && status == KENT_OK; n++) {
+        if (!known[part[n]]) status = tell_unknown(eq, part, n, err);
+    }
+done:
+    free(part);
+    free(known);
+    free(passes);
+    return status;
+}
+
+/* ---- solving -----------------------------------------------------------------------
+ */
+
+static const char *stop_text(kent_stop stop)
+{
+    switch (stop) {
+    case KENT_STOP_CONVERGED:
+        return "outflows kept switching between part and all of their flow";
+    case KENT_STOP_STALLED:
+        return "the line search stalled";
+    case KENT_STOP_LIMIT:
+        return "the limit of iterations was reached";
+    case KENT_STOP_SINGULAR:
+        return "the equations have no single answer";
+    }
+    return "it stopped";
+}
+
+static void fill_report(const kent_equations *eq, const kent_newton_end *end,
+                        kent_steady_report *r)
+{
+    const size_t gap_at = end->head_gap_at;
+    *r = (kent_steady_report){.stop = end->stop,
+                              .iterations = end->iterations,
+                              .worst_imbalance = end->imbalance,
+                              .worst_node = -1,
+                              .worst_head_gap = fabs(end->head_gap),
+                              .worst_span = -1};
+    if (end->imbalance_at < eq->nodes) r->worst_node = (int)end->imbalance_at;
+    if (gap_at >= eq->nodes && gap_at < eq->nodes + eq->spans) {
+        r->worst_span = (int)(gap_at - eq->nodes);
+    }
+}
+
+static kent_status tell_failure(const kent_model *m, const kent_steady_report *r,
+                                kent_error *err)
+{
+    const bool at_node = r->worst_node >= 0;
+    const bool at_span = r->worst_span >= 0;
+    return kent_error_set(
+        err, KENT_E_SOLVE, "",
+        "no steady state was found: %s after %d iterations; worst imbalance %.3g "
+        "m3/s%s%s; worst head gap %.3g m %s%s",
+        stop_text(r->stop), r->iterations, r->worst_imbalance,
+        at_node ? " at point " : "", at_node ? node_name(m, r->worst_node) : "",
+        r->worst_head_gap, at_span ? "along " : "at a device",
+        at_span ? m->spans[r->worst_span].id : "");
+}
+
+/* Newton's method for given laws of the outflows, then laws for what it found, until
+ * both agree. */
+static kent_status settle(kent_equations *eq, double *x, kent_steady_report *report,
+                          kent_error *err)
+{
+    kent_newton *nw = NULL;
+    kent_newton_end end = {0};
+    int iterations = 0;
+    size_t changed = 1;
+
+    kent_status status = kent_newton_new(eq, &nw, err);
+    if (status != KENT_OK) goto done;
+    for (int round = 0; round < ROUNDS && changed; round++) {
+        status = kent_newton_solve(nw, x, &end, err);
+        if (status != KENT_OK) goto done;
+        iterations += end.iterations;
+        if (end.stop != KENT_STOP_CONVERGED) break;
+        changed = kent_outlet_switch(eq, x, round >= ROUNDS_TOGETHER);
+    }
+    end.iterations = iterations;
+    fill_report(eq, &end, report);
+    if (end.stop != KENT_STOP_CONVERGED || changed) {
+        status = tell_failure(eq->model, report, err);
+    }
+done:
+    kent_newton_free(nw);
+    return status;
+}
+
+/* ---- the result --------------------------------------------------------------------
+ */
+
+/* Capacity at full opening that passes the given flow between the heads found. (06.10)
+ */
+static kent_status find_capacity(const kent_model *m, const kent_valve *v,
+                                 const double *head, double *capacity, kent_error *err)
+{
+    const double before = head[v->node[0]];
+    const double after = v->node[1] >= 0 ? head[v->node[1]] : v->discharge_level;
+    const double drop = copysign(1.0, v->flow) * (before - after); /* m, along it */
+    char where[160];
+
+    if (drop > 0.0) {
+        *capacity = fabs(v->flow) / sqrt(drop) / valve_share(v);
+        return KENT_OK;
+    }
+    place_text(m, v->place, where, sizeof where);
+    return kent_error_set(
+        err, KENT_E_INPUT, where,
+        "valve %s cannot pass %g m3/s: the head would be %.3f m before it and %.3f m "
+        "behind it; lower its flow or %s, or give its loss, kv or cv instead",
+        v->id, v->flow, before, after,
+        v->node[1] >= 0 ? "the level it leads to" : "its discharge_level");
+}
+
+static kent_status take_result(const kent_equations *eq, const double *x,
+                               kent_steady *s, kent_error *err)
+{
+    const kent_model *m = eq->model;
+    const double *link = x + eq->nodes + eq->spans;
+
+    memcpy(s->node_head, x, eq->nodes * sizeof *x);
+    memcpy(s->span_flow, x + eq->nodes, eq->spans * sizeof *x);
+    memcpy(s->valve_flow, link, m->valve_count * sizeof *x);
+    memcpy(s->outflow, link + m->valve_count, m->outflow_count * sizeof *x);
+    for (size_t i = 0; i < m->valve_count; i++) {
+        const kent_valve *v = &m->valves[i];
+        s->valve_capacity[i] = v->capacity;
+        if (!isnan(v->capacity)) continue;
+        if (find_capacity(m, v, s->node_head, &s->valve_capacity[i], err) != KENT_OK) {
+            return err->status;
+        }
+    }
+    return KENT_OK;
+}
+
+kent_status kent_steady_solve(const kent_model *m, kent_steady **out, kent_error *err)
+{
+    kent_status status = KENT_OK;
+    kent_equations *eq = NULL;
+    double *x = NULL;
+    kent_steady *s = steady_new(m);
+
+    if (!s) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
+    if (m->span_count > 0) { /* else only fittings with ports of their own */
+        status = check_valve_flows(m, err);
+        if (status != KENT_OK) goto done;
+        status = kent_equations_new(m, &eq, err);
+        if (status != KENT_OK) goto done;
+        status = check_known(eq, err);
+        if (status != KENT_OK) goto done;
+        x = kent_alloc(eq->size, sizeof *x);
+        if (!x) {
+            status = kent_error_nomem(err);
+            goto done;
+        }
+        kent_equations_start(eq, x);
+        status = settle(eq, x, &s->report, err);
+        if (status != KENT_OK) goto done;
+        status = take_result(eq, x, s, err);
+        if (status != KENT_OK) goto done;
+    }
+    *out = s;
+    s = NULL; /* handed over */
+done:
+    free(x);
+    kent_equations_free(eq);
+    kent_steady_free(s);
+    return status;
+}
+
+double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
+                        double chainage)
+{
+    assert(span >= 0 && (size_t)span < m->span_count);
+    const kent_span *e = &m->spans[span];
+    const double share = chainage / e->length;
+    return (1.0 - share) * s->node_head[e->node[0]] + share * s->node_head[e->node[1]];
+}
+
+double kent_static_level(const kent_model *m, int node)
+{
+    double level = NAN;
+    assert(node >= 0 && (size_t)node < m->node_count);
+    int *part = kent_alloc(m->node_count, sizeof *part);
+
+    if (!part) return NAN;
+    kent_parts_find(m, NULL, part);
+    for (size_t i = 0; i < m->fixed_level_count; i++) {
+        const kent_fixed_level *f = &m->fixed_levels[i];
+        if (f->node < 0 || part[f->node] != part[node]) continue;
+        level = fmax(level, f->level); /* fmax passes over the NAN */
+    }
+    free(part);
+    return level;
+}
