@@ -137,7 +137,6 @@ static double start_station(const kent_model *m, const kent_layout *l,
                             const kent_pipe *pipe)
 {
     const int start = m->route[pipe->route_first];
-    if (!isnan(m->points[start].station)) return m->points[start].station;
     bool ended = false, continued = false; /* by pipes listed before this one */
     for (size_t i = l->first[start]; i < l->first[start + 1]; i++) {
         const size_t stop = l->stop[i];
@@ -149,7 +148,10 @@ static double start_station(const kent_model *m, const kent_layout *l,
             continued = true;
         }
     }
-    if (ended && !continued) return l->station[start];
+    if (!continued) { /* else a branch, which has stations of its own */
+        if (!isnan(m->points[start].station)) return m->points[start].station;
+        if (ended) return l->station[start];
+    }
     for (size_t k = 1; k < pipe->route_count; k++) {
         const size_t stop = pipe->route_first + k;
         const double given = m->points[m->route[stop]].station;
@@ -168,8 +170,11 @@ void kent_route_stations(const kent_model *m, const kent_layout *l)
         for (size_t k = 0; k < pipe->route_count; k++) {
             const size_t stop = pipe->route_first + k;
             const int point = m->route[stop];
-            if (k > 0) here += m->chainage[stop] - m->chainage[stop - 1];
-            if (!isnan(m->points[point].station)) here = m->points[point].station;
+            if (k > 0) {
+                here += m->chainage[stop] - m->chainage[stop - 1];
+                const double given = m->points[point].station;
+                if (!isnan(given)) here = given;
+            }
             if (isnan(l->station[point])) l->station[point] = here;
         }
     }

@@ -24,13 +24,14 @@ enum {
 
 static_assert((int)LISTS == (int)KENT_BUILD_LISTS, "one capacity for each list");
 
-/* Room for one more in a list of the model's; its index. */
-static int one_more(kent_build *b, int list, void **array, size_t *count, size_t size)
+/* The list with room for one more of the model's things. */
+static void *one_more(kent_build *b, int list, void *array, size_t *count, size_t size)
 {
-    if (kent_grow(array, &b->capacity[list], *count + 1, size) != 0) {
+    if (kent_grow(&array, &b->capacity[list], *count + 1, size) != 0) {
         fail_msg("no memory for the model under test");
     }
-    return (int)(*count)++;
+    ++*count;
+    return array;
 }
 
 static void name(char id[KENT_ID], const char *text)
@@ -88,8 +89,8 @@ void kent_build_clear(kent_build *b)
 int kent_build_point(kent_build *b, const char *id, double x, double y, double z)
 {
     kent_model *m = b->model;
-    const int i =
-        one_more(b, POINTS, (void **)&m->points, &m->point_count, sizeof *m->points);
+    m->points = one_more(b, POINTS, m->points, &m->point_count, sizeof *m->points);
+    const int i = (int)m->point_count - 1;
     m->points[i] = (kent_point){.at = {x, y, z},
                                 .cover = (double)NAN,
                                 .water_table = (double)NAN,
@@ -110,8 +111,8 @@ static size_t add_route(kent_build *b, const char *route)
         const size_t length = strcspn(at, " ");
         (void)snprintf(id, sizeof id, "%.*s", (int)length, at);
         const int point = point_named(b, id);
-        const int i =
-            one_more(b, ROUTE, (void **)&m->route, &m->route_count, sizeof *m->route);
+        m->route = one_more(b, ROUTE, m->route, &m->route_count, sizeof *m->route);
+        const int i = (int)m->route_count - 1;
         m->route[i] = point;
         count++;
         at += length;
@@ -126,8 +127,8 @@ int kent_build_pipe(kent_build *b, const char *id, const char *route, double bor
     const double wall = 0.01; /* m */
     const size_t first = m->route_count;
     const size_t count = add_route(b, route);
-    const int i =
-        one_more(b, PIPES, (void **)&m->pipes, &m->pipe_count, sizeof *m->pipes);
+    m->pipes = one_more(b, PIPES, m->pipes, &m->pipe_count, sizeof *m->pipes);
+    const int i = (int)m->pipe_count - 1;
     m->pipes[i] = (kent_pipe){.route_first = first,
                               .route_count = count,
                               .length = (double)NAN,
@@ -153,8 +154,9 @@ int kent_build_pipe(kent_build *b, const char *id, const char *route, double bor
 int kent_build_fixed_level(kent_build *b, const char *at, double level)
 {
     kent_model *m = b->model;
-    const int i = one_more(b, FIXED_LEVELS, (void **)&m->fixed_levels,
-                           &m->fixed_level_count, sizeof *m->fixed_levels);
+    m->fixed_levels = one_more(b, FIXED_LEVELS, m->fixed_levels, &m->fixed_level_count,
+                               sizeof *m->fixed_levels);
+    const int i = (int)m->fixed_level_count - 1;
     m->fixed_levels[i] = (kent_fixed_level){
         .point = point_named(b, at), .level = level, .node = -1, .place = {0, 200 + i}};
     return i;
@@ -163,8 +165,9 @@ int kent_build_fixed_level(kent_build *b, const char *at, double level)
 int kent_build_outflow(kent_build *b, const char *at, double flow)
 {
     kent_model *m = b->model;
-    const int i = one_more(b, OUTFLOWS, (void **)&m->outflows, &m->outflow_count,
-                           sizeof *m->outflows);
+    m->outflows =
+        one_more(b, OUTFLOWS, m->outflows, &m->outflow_count, sizeof *m->outflows);
+    const int i = (int)m->outflow_count - 1;
     m->outflows[i] = (kent_outflow){
         .point = point_named(b, at), .flow = flow, .node = -1, .place = {0, 300 + i}};
     return i;
@@ -174,8 +177,8 @@ int kent_build_valve(kent_build *b, const char *id, const char *at, double capac
                      double discharge_level)
 {
     kent_model *m = b->model;
-    const int i =
-        one_more(b, VALVES, (void **)&m->valves, &m->valve_count, sizeof *m->valves);
+    m->valves = one_more(b, VALVES, m->valves, &m->valve_count, sizeof *m->valves);
+    const int i = (int)m->valve_count - 1;
     m->valves[i] = (kent_valve){.point = point_named(b, at),
                                 .type = "linear",
                                 .curve = kent_valve_curve_linear(),
@@ -193,8 +196,9 @@ int kent_build_valve(kent_build *b, const char *id, const char *at, double capac
 int kent_build_scenario(kent_build *b, const char *id, double duration)
 {
     kent_model *m = b->model;
-    const int i = one_more(b, SCENARIOS, (void **)&m->scenarios, &m->scenario_count,
-                           sizeof *m->scenarios);
+    m->scenarios =
+        one_more(b, SCENARIOS, m->scenarios, &m->scenario_count, sizeof *m->scenarios);
+    const int i = (int)m->scenario_count - 1;
     m->scenarios[i] = (kent_scenario){.duration = duration,
                                       .class_of = KENT_OCCASIONAL,
                                       .event_first = m->event_count,
@@ -209,8 +213,8 @@ static int add_event(kent_build *b, int scenario, kent_event event)
     if (scenario + 1 != (int)m->scenario_count) {
         fail_msg("events belong to the scenario added last");
     }
-    const int i =
-        one_more(b, EVENTS, (void **)&m->events, &m->event_count, sizeof *m->events);
+    m->events = one_more(b, EVENTS, m->events, &m->event_count, sizeof *m->events);
+    const int i = (int)m->event_count - 1;
     m->events[i] = event;
     m->events[i].place = (kent_place){0, 600 + i};
     m->scenarios[scenario].event_count++;
@@ -234,7 +238,8 @@ int kent_build_law(kent_build *b, int scenario, kent_event_kind kind, int target
     kent_model *m = b->model;
     const size_t first = m->law_count;
     for (size_t k = 0; k < count; k++) {
-        const int i = one_more(b, LAW, (void **)&m->law, &m->law_count, sizeof *m->law);
+        m->law = one_more(b, LAW, m->law, &m->law_count, sizeof *m->law);
+        const int i = (int)m->law_count - 1;
         m->law[i] = law[k];
     }
     return add_event(b, scenario,
@@ -252,8 +257,8 @@ int kent_build_soil(kent_build *b, const char *id, double allowable_bearing,
 {
     kent_model *m = b->model;
     const double nan = (double)NAN;
-    const int i =
-        one_more(b, SOILS, (void **)&m->soils, &m->soil_count, sizeof *m->soils);
+    m->soils = one_more(b, SOILS, m->soils, &m->soil_count, sizeof *m->soils);
+    const int i = (int)m->soil_count - 1;
     m->soils[i] = (kent_soil){.source = "given in the case",
                               .allowable_bearing = allowable_bearing,
                               .factor_inside = 1.0,
@@ -275,8 +280,8 @@ static int add_note(kent_build *b, const char *id, int point)
 {
     kent_model *m = b->model;
     const double nan = (double)NAN;
-    const int i =
-        one_more(b, NOTES, (void **)&m->notes, &m->note_count, sizeof *m->notes);
+    m->notes = one_more(b, NOTES, m->notes, &m->note_count, sizeof *m->notes);
+    const int i = (int)m->note_count - 1;
     m->notes[i] = (kent_fitting_note){.point = point,
                                       .type = -1,
                                       .angle = nan,
@@ -305,8 +310,9 @@ int kent_build_ports(kent_build *b, const char *id, int type, const kent_port *p
     m->notes[note].port_first = m->given_port_count;
     m->notes[note].port_count = count;
     for (size_t k = 0; k < count; k++) {
-        const int i = one_more(b, PORTS, (void **)&m->given_ports, &m->given_port_count,
-                               sizeof *m->given_ports);
+        m->given_ports = one_more(b, PORTS, m->given_ports, &m->given_port_count,
+                                  sizeof *m->given_ports);
+        const int i = (int)m->given_port_count - 1;
         m->given_ports[i] = ports[k];
     }
     return note;

@@ -1,0 +1,236 @@
+/* Cutting routes into spans; nodes and ends; losses along a span. */
+#include "kent_build.h"
+#include "kent_check.h"
+
+#include <math.h>
+
+/* R --- P --- T --- E, with a branch T --- D: the main passes T in mid-route. */
+static kent_build branched(void)
+{
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 30.0);
+    kent_build_point(&b, "P", 300.0, 0.0, 20.0);
+    kent_build_point(&b, "T", 700.0, 0.0, 10.0);
+    kent_build_point(&b, "E", 1000.0, 0.0, 5.0);
+    kent_build_point(&b, "D", 700.0, 200.0, 8.0);
+    kent_build_pipe(&b, "A", "R P T E", 0.6, 1000.0);
+    kent_build_pipe(&b, "C", "T D", 0.15, 1200.0);
+    kent_build_fixed_level(&b, "R", 80.0);
+    kent_build_outflow(&b, "E", 0.1);
+    return b;
+}
+
+static void a_route_is_cut_where_another_pipe_meets_it(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    kent_build_derive(&b);
+    const kent_model *m = b.model;
+    assert_int_equal(m->span_count, 3);
+    assert_string_equal(m->spans[0].id, "A.1");
+    assert_string_equal(m->spans[1].id, "A.2");
+    assert_string_equal(m->spans[2].id, "C"); /* uncut: keeps its id */
+    assert_int_equal(m->spans[0].route_count, 3);
+    assert_int_equal(m->spans[0].pipe, 0);
+    assert_int_equal(m->spans[1].pipe, 0);
+    kent_build_clear(&b);
+}
+
+static void points_in_between_are_no_nodes(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    kent_build_derive(&b);
+    const kent_model *m = b.model;
+    assert_int_equal(m->node_count, 4); /* R T E D */
+    for (size_t n = 0; n < m->node_count; n++) {
+        assert_int_not_equal(m->nodes[n].point, kent_model_point_index(m, "P"));
+    }
+    const kent_node *tee = &m->nodes[kent_build_node_of(&b, "T")];
+    assert_int_equal(tee->end_count, 3);
+    assert_int_equal(tee->kind, KENT_NODE_JUNCTION);
+    const kent_node *level = &m->nodes[kent_build_node_of(&b, "R")];
+    assert_int_equal(level->kind, KENT_NODE_FIXED_LEVEL);
+    assert_int_equal(m->fixed_levels[0].node, kent_build_node_of(&b, "R"));
+    assert_int_equal(m->nodes[m->outflows[0].node].kind, KENT_NODE_OUTFLOW);
+    kent_build_clear(&b);
+}
+
+static void span_lengths_add_up_to_the_pipe(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    b.model->pipes[0].length = 1100.0;
+    kent_build_derive(&b);
+    const kent_span *a = &b.model->spans[0];
+    assert_close(a[0].length + a[1].length, 1100.0, 1e-14);
+    assert_close(a[0].area, acos(-1.0) * 0.36 / 4.0, 1e-14);
+    kent_build_clear(&b);
+}
+
+static void minor_losses_are_shared_by_length(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    b.model->pipes[0].loss = 2.0;
+    kent_build_derive(&b);
+    const kent_span *a = &b.model->spans[0];
+    assert_close(a[0].loss + a[1].loss, 2.0, 1e-14);
+    assert_close(a[0].loss / a[1].loss, a[0].length / a[1].length, 1e-14);
+    kent_build_clear(&b);
+}
+
+static void an_in_line_valve_has_two_nodes_in_the_direction_of_the_route(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "V", 100.0, 0.0, 0.0);
+    kent_build_point(&b, "E", 200.0, 0.0, 0.0);
+    kent_build_pipe(&b, "A", "R V E", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    const int v = kent_build_valve(&b, "V1", "V", 0.1, (double)NAN);
+    kent_build_derive(&b);
+    const kent_model *m = b.model;
+    assert_int_equal(m->span_count, 2);
+    assert_int_equal(m->valves[v].node[0], m->spans[0].node[1]);
+    assert_int_equal(m->valves[v].node[1], m->spans[1].node[0]);
+    for (int side = 0; side < 2; side++) {
+        const kent_node *node = &m->nodes[m->valves[v].node[side]];
+        assert_int_equal(node->kind, KENT_NODE_VALVE);
+        assert_int_equal(node->device, v);
+        assert_int_equal(node->end_count, 1);
+    }
+    kent_build_clear(&b);
+}
+
+static void a_valve_between_two_pipes_is_passed_as_they_run(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "V", 100.0, 0.0, 0.0);
+    kent_build_point(&b, "E", 200.0, 0.0, 0.0);
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_pipe(&b, "B", "V E", 0.3, 1000.0); /* the leaving one listed first */
+    kent_build_pipe(&b, "A", "R V", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    const int v = kent_build_valve(&b, "V1", "V", 0.1, (double)NAN);
+    kent_build_derive(&b);
+    const kent_model *m = b.model;
+    const int a = kent_build_span_of(&b, "A"), leaving = kent_build_span_of(&b, "B");
+    assert_int_equal(m->valves[v].node[0], m->spans[a].node[1]);
+    assert_int_equal(m->valves[v].node[1], m->spans[leaving].node[0]);
+    kent_build_clear(&b);
+}
+
+static void a_discharging_valve_has_one_node(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "V", 100.0, 0.0, 0.0);
+    kent_build_pipe(&b, "A", "R V", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    const int v = kent_build_valve(&b, "V1", "V", 0.1, 2.0);
+    kent_build_derive(&b);
+    assert_int_equal(b.model->node_count, 2);
+    assert_int_equal(b.model->valves[v].node[0], b.model->spans[0].node[1]);
+    assert_int_equal(b.model->valves[v].node[1], -1);
+    kent_build_clear(&b);
+}
+
+static void two_pipes_may_run_side_by_side(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "J", 100.0, 0.0, 0.0);
+    kent_build_point(&b, "K", 50.0, 40.0, 0.0);
+    kent_build_pipe(&b, "A", "R J", 0.3, 1000.0);
+    kent_build_pipe(&b, "B", "R K J", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    kent_build_derive(&b);
+    assert_int_equal(b.model->node_count, 2);
+    assert_int_equal(b.model->nodes[0].end_count, 2);
+    assert_int_equal(b.model->nodes[1].end_count, 2);
+    kent_build_clear(&b);
+}
+
+static void the_level_between_points_is_a_straight_line(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    kent_build_derive(&b);
+    const kent_span *a = &b.model->spans[0]; /* R P T: 30, 20, 10 m */
+    const double leg = hypot(300.0, 10.0);
+    assert_close(kent_span_level(b.model, a, 0.0), 30.0, 1e-14);
+    assert_close(kent_span_level(b.model, a, 0.5 * leg), 25.0, 1e-14);
+    assert_close(kent_span_level(b.model, a, leg), 20.0, 1e-14);
+    assert_close(kent_span_level(b.model, a, a->length), 10.0, 1e-14);
+    kent_build_clear(&b);
+}
+
+static void loss_is_friction_and_minor_losses_with_the_sign_of_the_flow(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    b.model->pipes[0].friction = KENT_DARCY_FIXED;
+    b.model->pipes[0].friction_coefficient = 0.02;
+    b.model->pipes[0].loss = 3.0;
+    kent_build_derive(&b);
+    const kent_span *a = &b.model->spans[0];
+    const double speed = 0.4 / a->area;
+    const double want =
+        (0.02 * a->length / 0.6 + a->loss) * speed * speed / (2.0 * b.model->gravity);
+    double slope = 0.0;
+    assert_close(kent_span_loss(b.model, a, 0.4, &slope), want, 1e-12);
+    assert_close(kent_span_loss(b.model, a, -0.4, NULL), -want, 1e-12);
+    assert_close(slope, 2.0 * want / 0.4, 1e-9); /* a square law */
+    kent_build_clear(&b);
+}
+
+static void the_wave_speed_comes_from_the_wall_where_none_is_given(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    b.model->pipes[0].wave_speed = (double)NAN;
+    b.model->pipes[0].thin_wall = true;
+    kent_build_derive(&b);
+    /* a = sqrt(K/rho) / sqrt(1 + K D/(E e)), free joints, thin wall */
+    const double want =
+        sqrt(2.2e9 / 1000.0) / sqrt(1.0 + 2.2e9 * 0.6 / (170.0e9 * 0.01));
+    assert_close(b.model->spans[0].wave_speed, want, 1e-12);
+    assert_close(b.model->spans[2].wave_speed, 1200.0, 1e-15);
+    kent_build_clear(&b);
+}
+
+static void deriving_twice_gives_the_same(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    kent_build_derive(&b);
+    const size_t spans = b.model->span_count, fittings = b.model->fitting_count;
+    kent_build_derive(&b);
+    assert_int_equal(b.model->span_count, spans);
+    assert_int_equal(b.model->fitting_count, fittings);
+    kent_build_clear(&b);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_route_is_cut_where_another_pipe_meets_it),
+        cmocka_unit_test(points_in_between_are_no_nodes),
+        cmocka_unit_test(span_lengths_add_up_to_the_pipe),
+        cmocka_unit_test(minor_losses_are_shared_by_length),
+        cmocka_unit_test(an_in_line_valve_has_two_nodes_in_the_direction_of_the_route),
+        cmocka_unit_test(a_valve_between_two_pipes_is_passed_as_they_run),
+        cmocka_unit_test(a_discharging_valve_has_one_node),
+        cmocka_unit_test(two_pipes_may_run_side_by_side),
+        cmocka_unit_test(the_level_between_points_is_a_straight_line),
+        cmocka_unit_test(loss_is_friction_and_minor_losses_with_the_sign_of_the_flow),
+        cmocka_unit_test(the_wave_speed_comes_from_the_wall_where_none_is_given),
+        cmocka_unit_test(deriving_twice_gives_the_same),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
