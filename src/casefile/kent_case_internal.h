@@ -1,0 +1,37 @@
+/* A case being moved from records into a model. */
+#ifndef KENT_CASE_INTERNAL_H
+#define KENT_CASE_INTERNAL_H
+
+#include "kent_case.h"
+#include "kent_catalogue_internal.h"
+
+typedef struct kent_filling {
+    kent_reader reader;
+    const kent_catalogue *catalogue;
+    kent_model *model;
+    kent_record root;      /* the case's own group */
+    size_t route_capacity; /* of model->route, and so on */
+    size_t event_capacity;
+    size_t law_capacity;
+    size_t port_capacity;
+} kent_filling;
+
+/* Moves the index-th element of a list; its place in the model's array stands zeroed.
+ */
+typedef void kent_fill_one(kent_filling *f, kent_record *record, size_t index);
+kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_outflow,
+    kent_fill_valve, kent_fill_scenario, kent_fill_soil, kent_fill_fitting;
+
+/* Index of a soil that a record names, -1 without one; a soil of the catalogue is
+ * copied into the model when it is first named. */
+int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char *key);
+
+/* Notes what nobody gave: "what\tvalue\twhy". */
+void kent_fill_assume(kent_filling *f, const char *what, const char *value,
+                      const char *why);
+
+/* The same, with a value to be displayed. */
+void kent_fill_assume_value(kent_filling *f, const char *what, double si,
+                            kent_kind kind, const char *why);
+
+#endif

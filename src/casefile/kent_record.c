@@ -1,0 +1,575 @@
+#include "kent_record.h"
+
+#include <assert.h>
+#include <math.h>
+#include <stdarg.h>
+#include <stdio.h>
+#include <string.h>
+
+static const struct {
+    const char *group; /* kent_key.words of a reference */
+    const char *word;  /* "there is no ... " */
+} SHELVES[KENT_SHELF_COUNT] = {
+    [KENT_SHELF_POINTS] = {"point", "point"},
+    [KENT_SHELF_SOILS] = {"soil", "soil"},
+    [KENT_SHELF_VALVES] = {"valve", "valve"},
+    [KENT_SHELF_OUTFLOWS] = {"outflow", "outflow at"},
+    [KENT_SHELF_PIPES] = {"pipe", "pipe"},
+    [KENT_SHELF_SCENARIOS] = {"scenario", "scenario"},
+    [KENT_SHELF_FITTINGS] = {"fitting", "fitting"},
+    [KENT_SHELF_PIPE_CLASSES] = {"pipe_class", "pipe class"},
+    [KENT_SHELF_MATERIALS] = {"material", "material"},
+    [KENT_SHELF_VALVE_TYPES] = {"valve_type", "valve type"},
+    [KENT_SHELF_SOIL_ROWS] = {"soil_row", "soil of the catalogue"},
+    [KENT_SHELF_RULES] = {"rule", "set of rules"},
+};
+
+/* ---- complaints -------------------------------------------------------------------
+ */
+
+static void complain_at(kent_reader *r, kent_record *record, const kent_twig *twig,
+                        const char *what)
+{
+    const kent_place place = kent_tree_place(r->tree, twig);
+    record->sound = false;
+    kent_complain(r->complaints, kent_tree_file(r->tree, (size_t)place.file),
+                  place.line, "%s%s", record->label, what);
+}
+
+__attribute__((format(printf, 4, 5))) static void complain(kent_reader *r,
+                                                           kent_record *record,
+                                                           const kent_twig *twig,
+                                                           const char *fmt, ...)
+{
+    char what[400];
+    va_list args;
+    va_start(args, fmt);
+    (void)vsnprintf(what, sizeof what, fmt, args);
+    va_end(args);
+    complain_at(r, record, twig, what);
+}
+
+void kent_record_complain(kent_reader *r, kent_record *record, const char *key,
+                          const char *fmt, ...)
+{
+    char what[400];
+    const kent_twig *twig = key ? kent_record_field(record, key)->twig : NULL;
+    va_list args;
+    va_start(args, fmt);
+    (void)vsnprintf(what, sizeof what, fmt, args);
+    va_end(args);
+    complain_at(r, record, twig ? twig : record->twig, what);
+}
+
+/* ---- one value --------------------------------------------------------------------
+ */
+
+/* The value as the file has it, for messages. */
+static void show(const kent_twig *twig, char *out, size_t size)
+{
+    const char *text = kent_twig_text(twig);
+    if (text) {
+        (void)snprintf(out, size, "\"%.60s\"", text);
+    } else {
+        (void)snprintf(out, size, "%.9g", kent_twig_number(twig));
+    }
+}
+
+static bool in_range(const kent_key *key, double value)
+{
+    const double slack = 1e-12 * fabs(value); /* a limit converted both ways */
+    if (isnan(value)) return false;
+    return (key->above_least ? value > key->least : value >= key->least - slack) &&
+           value <= key->most + slack;
+}
+
+static void check_range(kent_reader *r, kent_record *record, const kent_key *key,
+                        const kent_twig *twig, double value)
+{
+    char range[80];
+    char shown[80];
+    if (in_range(key, value)) return;
+    kent_key_range(key, range, sizeof range);
+    show(twig, shown, sizeof shown);
+    complain(r, record, twig, "%s = %s is out of range; the range is %s", key->key,
+             shown, range);
+}
+
+static void complain_type(kent_reader *r, kent_record *record, const kent_twig *twig,
+                          const char *key, const char *belongs)
+{
+    complain(r, record, twig, "%s is %s where %s belongs", key,
+             kent_twig_type_word(twig), belongs);
+}
+
+static double read_quantity(kent_reader *r, kent_record *record, const char *key,
+                            const kent_twig *twig, kent_kind kind)
+{
+    const char *text = kent_twig_text(twig);
+    kent_error err = {0};
+    double si = NAN;
+    if (text) {
+        const kent_status status = kent_units_read(r->units, text, kind, &si, &err);
+        if (status == KENT_OK) return si;
+        if (status == KENT_E_NOMEM) r->failed = true;
+        complain(r, record, twig, "%s: %s", key, err.what);
+    } else if (!isnan(kent_twig_number(twig))) {
+        complain(r, record, twig,
+                 "%s = %.9g has no unit; write for instance \"%s\" or \"%s\"", key,
+                 kent_twig_number(twig), kent_kind_example(kind, KENT_SI),
+                 kent_kind_example(kind, KENT_US));
+    } else {
+        char belongs[120];
+        (void)snprintf(belongs, sizeof belongs, "%s, for instance \"%s\",",
+                       kent_kind_word(kind), kent_kind_example(kind, KENT_SI));
+        complain_type(r, record, twig, key, belongs);
+    }
+    return NAN;
+}
+
+static void quantity(kent_reader *r, kent_record *record, const kent_key *key,
+                     kent_field *f)
+{
+    const char *text = kent_twig_text(f->twig);
+    if (text && key->words && strcmp(text, key->words) == 0) {
+        f->number = INFINITY;
+        return;
+    }
+    f->number = read_quantity(r, record, key->key, f->twig, key->kind);
+    if (!isnan(f->number)) check_range(r, record, key, f->twig, f->number);
+}
+
+static void number(kent_reader *r, kent_record *record, const kent_key *key,
+                   kent_field *f)
+{
+    f->number = kent_twig_number(f->twig);
+    if (isnan(f->number)) {
+        complain_type(r, record, f->twig, key->key, "a number without unit");
+    } else if (key->value == KENT_VALUE_COUNT &&
+               kent_twig_type_of(f->twig) != KENT_TWIG_WHOLE) {
+        complain(r, record, f->twig, "%s = %.9g is not a whole number", key->key,
+                 f->number);
+    } else {
+        check_range(r, record, key, f->twig, f->number);
+    }
+}
+
+static void either(kent_reader *r, kent_record *record, const kent_key *key,
+                   kent_field *f)
+{
+    f->bare = !isnan(kent_twig_number(f->twig));
+    if (f->bare) {
+        number(r, record, key, f);
+    } else {
+        f->number = read_quantity(r, record, key->key, f->twig, key->kind);
+    }
+}
+
+static bool has_control(const char *text)
+{
+    for (const unsigned char *p = (const unsigned char *)text; *p; p++) {
+        if (*p < 0x20 || *p == 0x7F) return true;
+    }
+    return false;
+}
+
+static void text(kent_reader *r, kent_record *record, const kent_key *key,
+                 kent_field *f)
+{
+    f->text = kent_twig_text(f->twig);
+    if (!f->text) {
+        complain_type(r, record, f->twig, key->key, "a text");
+    } else if ((double)strlen(f->text) > key->most) {
+        complain(r, record, f->twig, "%s is longer than %g bytes", key->key, key->most);
+    } else if (has_control(f->text)) {
+        complain(r, record, f->twig, "%s holds a line end or another control character",
+                 key->key);
+    }
+}
+
+/* Ids become parts of file names and of column headings. */
+static bool id_is_usable(const char *id)
+{
+    const size_t length = strlen(id);
+    return length > 0 && length < KENT_ID && id[0] != '.' && !has_control(id) &&
+           strcspn(id, " /\\\"'`,;:*?<>|$") == length;
+}
+
+static void id(kent_reader *r, kent_record *record, const kent_key *key, kent_field *f)
+{
+    f->text = kent_twig_text(f->twig);
+    if (!f->text) {
+        complain_type(r, record, f->twig, key->key, "a name in quotes");
+    } else if (!id_is_usable(f->text)) {
+        complain(
+            r, record, f->twig,
+            "%s = \"%.60s\" cannot be a name; use 1 to %d letters, digits and - _ . "
+            "+, no spaces",
+            key->key, f->text, KENT_ID - 1);
+    }
+}
+
+static kent_shelf shelf_of(const char *group)
+{
+    int i = 0;
+    while (i < KENT_SHELF_COUNT && strcmp(SHELVES[i].group, group) != 0) {
+        i++;
+    }
+    assert(i < KENT_SHELF_COUNT);
+    return (kent_shelf)i;
+}
+
+int kent_record_lookup(kent_reader *r, kent_record *record, const kent_twig *item,
+                       const char *key, kent_shelf shelf)
+{
+    const char *name = kent_twig_text(item);
+    if (!name) {
+        complain_type(r, record, item, key, "a name in quotes");
+        return -1;
+    }
+    int index = kent_directory_find(&r->shelves[shelf], name);
+    if (index < 0) index = kent_directory_find(&r->shelves[shelf], kent_spelling(name));
+    if (index >= 0) return index;
+
+    const char *near = r->complaints->count < KENT_COMPLAINTS_KEPT
+                           ? kent_directory_nearest(&r->shelves[shelf], name)
+                           : NULL;
+    if (!near && shelf == KENT_SHELF_SOILS) {
+        near = kent_directory_nearest(&r->shelves[KENT_SHELF_SOIL_ROWS], name);
+    }
+    if (near) {
+        complain(r, record, item, "%s: there is no %s \"%.60s\"; did you mean \"%s\"?",
+                 key, SHELVES[shelf].word, name, near);
+    } else {
+        complain(r, record, item, "%s: there is no %s \"%.60s\"", key,
+                 SHELVES[shelf].word, name);
+    }
+    return -1;
+}
+
+static void reference(kent_reader *r, kent_record *record, const kent_key *key,
+                      kent_field *f)
+{
+    const kent_shelf shelf = shelf_of(key->words);
+    f->text = kent_twig_text(f->twig);
+    if (f->text && shelf == KENT_SHELF_SOILS &&
+        kent_directory_find(&r->shelves[shelf], f->text) < 0) {
+        f->index = kent_directory_find(&r->shelves[KENT_SHELF_SOIL_ROWS], f->text);
+        f->from_catalogue = f->index >= 0;
+        if (f->from_catalogue) return;
+    }
+    f->index = kent_record_lookup(r, record, f->twig, key->key, shelf);
+}
+
+/* Index of a word in "a|b|~c", -1: not there; *later: it carries a "~". */
+static int word_index(const char *words, const char *word, bool *later)
+{
+    int index = 0;
+    for (const char *p = words; p; index++) {
+        const size_t length = strcspn(p, "|");
+        *later = p[0] == '~';
+        const size_t skip = *later ? 1 : 0;
+        if (strlen(word) == length - skip &&
+            strncmp(p + skip, word, length - skip) == 0) {
+            return index;
+        }
+        p = p[length] == '|' ? p + length + 1 : NULL;
+    }
+    *later = false;
+    return -1;
+}
+
+/* "push-on", "mechanical" ... : the words of this version, for people. */
+static void list_words(const char *words, char *out, size_t size)
+{
+    size_t used = 0;
+    out[0] = '\0';
+    for (const char *p = words; p;) {
+        const size_t length = strcspn(p, "|");
+        if (p[0] != '~') {
+            const int n = snprintf(out + used, size - used, "%s\"%.*s\"",
+                                   used > 0 ? ", " : "", (int)length, p);
+            if (n < 0 || (size_t)n >= size - used) return;
+            used += (size_t)n;
+        }
+        p = p[length] == '|' ? p + length + 1 : NULL;
+    }
+}
+
+static void word(kent_reader *r, kent_record *record, const kent_key *key,
+                 kent_field *f)
+{
+    char known[240];
+    bool later = false;
+    f->text = kent_twig_text(f->twig);
+    list_words(key->words, known, sizeof known);
+    if (!f->text) {
+        char belongs[280];
+        (void)snprintf(belongs, sizeof belongs, "one of %s", known);
+        complain_type(r, record, f->twig, key->key, belongs);
+        return;
+    }
+    f->text = kent_spelling(f->text);
+    f->index = word_index(key->words, f->text, &later);
+    if (later) {
+        complain(r, record, f->twig, "%s = \"%s\" is not in this version; it knows %s",
+                 key->key, f->text, known);
+    } else if (f->index < 0) {
+        complain(r, record, f->twig, "%s = \"%.60s\" is not known; it is one of %s",
+                 key->key, f->text, known);
+    }
+}
+
+static void vector(kent_reader *r, kent_record *record, const kent_key *key,
+                   kent_field *f)
+{
+    double v[3] = {NAN, NAN, NAN};
+    const bool list = kent_twig_type_of(f->twig) == KENT_TWIG_LIST;
+    const size_t count = list ? kent_twig_count(f->twig) : 0;
+    for (size_t i = 0; i < count && i < 3; i++) {
+        v[i] = kent_twig_number(kent_twig_child(f->twig, i));
+    }
+    f->vector = (kent_vec3){v[0], v[1], v[2]};
+    const double length = kent_vec3_length(f->vector);
+    if (count != 3 || !(length > 0.0) || !isfinite(length)) {
+        complain(r, record, f->twig,
+                 "%s must be three numbers, not all nil, as [ 1.0, 0.0, 0.0 ]",
+                 key->key);
+    }
+}
+
+/* "1+198": 1198 m, or 198 + 100 ft where the case is in US units. */
+static void station(kent_reader *r, kent_record *record, const kent_key *key,
+                    kent_field *f)
+{
+    const char *s = kent_twig_text(f->twig);
+    const char *plus = s ? strchr(s, '+') : NULL;
+    long whole = 0;
+    double part = 0.0;
+    char after = '\0';
+    if (!plus || plus == s || plus[1] < '0' || plus[1] > '9') {
+        f->number = read_quantity(r, record, key->key, f->twig, KENT_LENGTH);
+        return;
+    }
+    if (sscanf(s, "%9ld+%12lf%c", &whole, &part, &after) != 2) { /* NOLINT: checked */
+        complain(r, record, f->twig,
+                 "station = \"%.40s\" is no station; write \"1+198\" or a length", s);
+        return;
+    }
+    f->number = r->system == KENT_US ? 0.3048 * (100.0 * (double)whole + part)
+                                     : 1000.0 * (double)whole + part;
+}
+
+static void compound(kent_reader *r, kent_record *record, const kent_key *key,
+                     kent_field *f)
+{
+    const bool group = key->value == KENT_VALUE_GROUP;
+    const kent_twig_type wanted = group ? KENT_TWIG_GROUP : KENT_TWIG_LIST;
+    if (kent_twig_type_of(f->twig) != wanted) {
+        complain_type(r, record, f->twig, key->key,
+                      group ? "a group { }" : "a list ( )");
+        f->twig = NULL;
+    }
+}
+
+static void boolean(kent_reader *r, kent_record *record, const kent_key *key,
+                    kent_field *f)
+{
+    if (kent_twig_type_of(f->twig) != KENT_TWIG_SWITCH) {
+        complain_type(r, record, f->twig, key->key, "true or false");
+    }
+}
+
+/* What to do with a value of each kind; indexed by kent_value. */
+typedef void read_value(kent_reader *, kent_record *, const kent_key *, kent_field *);
+static read_value *const READ[] = {
+    [KENT_VALUE_QUANTITY] = quantity, [KENT_VALUE_NUMBER] = number,
+    [KENT_VALUE_COUNT] = number,      [KENT_VALUE_SWITCH] = boolean,
+    [KENT_VALUE_TEXT] = text,         [KENT_VALUE_ID] = id,
+    [KENT_VALUE_REF] = reference,     [KENT_VALUE_WORD] = word,
+    [KENT_VALUE_LIST] = compound,     [KENT_VALUE_GROUP] = compound,
+    [KENT_VALUE_STATION] = station,   [KENT_VALUE_VECTOR] = vector,
+    [KENT_VALUE_EITHER] = either,
+};
+
+/* ---- one record -------------------------------------------------------------------
+ */
+
+static const char *member_text(const kent_twig *twig, const char *name)
+{
+    const kent_twig *member = kent_twig_member(twig, name);
+    return member ? kent_twig_text(member) : NULL;
+}
+
+static void make_label(kent_record *record, const char *group, const char *owner,
+                       size_t position)
+{
+    char kind[32];
+    const char *name = member_text(record->twig, "id");
+    const char *at = member_text(record->twig, "at");
+    (void)snprintf(kind, sizeof kind, "%s", group);
+    for (char *p = kind; *p; p++) {
+        if (*p == '_' && strcmp(group, "design_rules") != 0) *p = ' ';
+    }
+    char *out = record->label;
+    const size_t size = sizeof record->label;
+    if (strcmp(group, "case") == 0 || strcmp(group, "catalogue") == 0) {
+        out[0] = '\0';
+    } else if (position > 0 && name) {
+        (void)snprintf(out, size, "%.100s%s \"%.40s\": ", owner, kind, name);
+    } else if (position > 0 && at) {
+        (void)snprintf(out, size, "%.100s%s at \"%.40s\": ", owner, kind, at);
+    } else if (position > 0) {
+        (void)snprintf(out, size, "%.100s%s %zu: ", owner, kind, position);
+    } else {
+        (void)snprintf(out, size, "%.100s%s: ", owner, kind);
+    }
+}
+
+static void read_member(kent_reader *r, kent_record *record, const char *group,
+                        const kent_twig *twig)
+{
+    const char *name = kent_spelling(kent_twig_name(twig));
+    size_t i = 0;
+    while (i < record->count && strcmp(record->keys[i].key, name) != 0) {
+        i++;
+    }
+    if (i == record->count) {
+        const char *near = kent_key_nearest(group, name);
+        if (near) {
+            complain(r, record, twig, "'%.60s' is not a key of %s; did you mean '%s'?",
+                     kent_twig_name(twig), kent_key_group_word(group), near);
+        } else {
+            complain(r, record, twig, "'%.60s' is not a key of %s",
+                     kent_twig_name(twig), kent_key_group_word(group));
+        }
+        return;
+    }
+    kent_field *f = &record->fields[i];
+    if (!kent_key_is_now(&record->keys[i])) {
+        complain(r, record, twig, "'%s' is not in this version", name);
+    } else if (f->twig) {
+        complain(r, record, twig, "'%s' is given twice, spelt two ways; keep one",
+                 name);
+    } else {
+        f->twig = twig;
+        READ[record->keys[i].value](r, record, &record->keys[i], f);
+    }
+}
+
+void kent_record_read(kent_reader *r, const kent_twig *twig, const char *group,
+                      const char *owner, size_t position, kent_record *out)
+{
+    *out = (kent_record){
+        .twig = twig, .place = kent_tree_place(r->tree, twig), .sound = true};
+    out->keys = kent_key_group(group, &out->count);
+    assert(out->keys && out->count <= KENT_RECORD_FIELDS);
+    make_label(out, group, owner, position);
+    for (size_t i = 0; i < out->count; i++) {
+        out->fields[i].number = NAN;
+        out->fields[i].index = -1;
+    }
+    const size_t members = kent_twig_count(twig);
+    for (size_t i = 0; i < members; i++) {
+        read_member(r, out, group, kent_twig_child(twig, i));
+    }
+    for (size_t i = 0; i < out->count; i++) {
+        if (kent_key_is_required(&out->keys[i]) && !out->fields[i].twig &&
+            !kent_twig_member(twig, out->keys[i].key)) {
+            complain(r, out, twig, "'%s' is missing: %s", out->keys[i].key,
+                     out->keys[i].says);
+        }
+    }
+}
+
+const kent_twig *kent_record_element(kent_reader *r, const kent_twig *list,
+                                     const char *owner, size_t index)
+{
+    const kent_twig *element = kent_twig_child(list, index);
+    if (kent_twig_type_of(element) == KENT_TWIG_GROUP) return element;
+    const kent_place place = kent_tree_place(r->tree, element);
+    kent_complain(r->complaints, kent_tree_file(r->tree, (size_t)place.file),
+                  place.line, "%selement %zu of '%s' is %s where a group { } belongs",
+                  owner, index + 1, kent_twig_name(list), kent_twig_type_word(element));
+    return NULL;
+}
+
+const kent_field *kent_record_field(const kent_record *record, const char *key)
+{
+    size_t i = 0;
+    while (i < record->count && strcmp(record->keys[i].key, key) != 0) {
+        i++;
+    }
+    assert(i < record->count);
+    return &record->fields[i];
+}
+
+bool kent_record_has(const kent_record *record, const char *key)
+{
+    return kent_record_field(record, key)->twig != NULL;
+}
+
+double kent_record_number(const kent_record *record, const char *key)
+{
+    return kent_record_field(record, key)->number;
+}
+
+double kent_record_number_or(const kent_record *record, const char *key, double other)
+{
+    const kent_field *f = kent_record_field(record, key);
+    return f->twig ? f->number : other;
+}
+
+bool kent_record_switch(const kent_record *record, const char *key, bool other)
+{
+    const kent_field *f = kent_record_field(record, key);
+    return f->twig ? kent_twig_is_true(f->twig) : other;
+}
+
+void kent_record_copy(const kent_record *record, const char *key, const char *other,
+                      char *out, size_t size)
+{
+    const kent_field *f = kent_record_field(record, key);
+    const char *from = f->text ? f->text : other ? other : "";
+    (void)snprintf(out, size, "%s", from);
+}
+
+double kent_record_item(kent_reader *r, kent_record *record, const kent_twig *item,
+                        const char *key, bool is_quantity, kent_kind kind)
+{
+    if (is_quantity) return read_quantity(r, record, key, item, kind);
+    const double value = kent_twig_number(item);
+    if (isnan(value)) complain_type(r, record, item, key, "a number without unit");
+    return value;
+}
+
+void kent_reader_shelve(kent_reader *r, kent_shelf shelf, const char *id, int index,
+                        kent_place place)
+{
+    if (!id) return; /* refused already */
+    if (kent_directory_add(&r->shelves[shelf], id, index, place) != 0) r->failed = true;
+}
+
+void kent_reader_close_shelf(kent_reader *r, kent_shelf shelf)
+{
+    kent_directory *d = &r->shelves[shelf];
+    kent_directory_sort(d);
+    for (size_t i = 1; i < d->count; i++) {
+        const kent_entry *first = &d->entries[i - 1];
+        const kent_entry *second = &d->entries[i];
+        if (strcmp(first->id, second->id) != 0 || second->place.file < 0) continue;
+        kent_complain(
+            r->complaints, kent_tree_file(r->tree, (size_t)second->place.file),
+            second->place.line, "%s \"%.60s\" is given twice, first at line %d",
+            SHELVES[shelf].word, second->id, first->place.line);
+    }
+}
+
+void kent_reader_clear(kent_reader *r)
+{
+    for (int i = 0; i < KENT_SHELF_COUNT; i++) {
+        kent_directory_clear(&r->shelves[i]);
+    }
+    kent_units_free(r->units);
+    r->units = NULL;
+}

@@ -1,0 +1,647 @@
+/* A small lexer for libconfig's syntax: strings, comments, numbers, names, brackets. */
+#include "kent_scan.h"
+
+#include <errno.h>
+#include <math.h>
+#include <stdarg.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+enum {
+    SIZE_MOST = 64 * 1024 * 1024, /* bytes of all files together */
+    LINE_MOST = 65536,            /* bytes */
+    STRING_MOST = 4096,           /* bytes; libconfig takes quadratic time in it */
+    NEST_MOST = 32,
+    INCLUDE_MOST = 8,
+    LEXEME_SHOWN = 40 /* bytes of an offending word that a message repeats */
+};
+
+typedef enum token {
+    TOKEN_NONE,
+    TOKEN_NAME,
+    TOKEN_EQUALS,
+    TOKEN_VALUE,
+    TOKEN_COMMA,
+    TOKEN_OTHER
+} token;
+
+typedef struct source {
+    char *bytes; /* owned, NUL-terminated */
+    size_t size, at, line_start;
+    int file, line;
+} source;
+
+typedef struct bracket {
+    char open;
+    int file, line;
+    bool whole, fraction; /* kinds of number seen directly inside */
+} bracket;
+
+typedef struct scanner {
+    kent_scan *out;
+    kent_complaints *complaints;
+    kent_error *err;
+    size_t folder_length; /* of the case's own folder at the start of its path */
+    const char *path;
+    source stack[INCLUDE_MOST];
+    int depth;
+    bracket brackets[NEST_MOST];
+    int nest;
+    token last;
+    char last_name[LEXEME_SHOWN + 1];
+    size_t total; /* bytes read so far */
+    bool stopped; /* out of memory, or nothing sensible can follow */
+} scanner;
+
+static source *top(scanner *s) { return &s->stack[s->depth - 1]; }
+
+__attribute__((format(printf, 3, 4))) static void complain(scanner *s, int line,
+                                                           const char *fmt, ...)
+{
+    char what[400];
+    va_list args;
+    va_start(args, fmt);
+    (void)vsnprintf(what, sizeof what, fmt, args);
+    va_end(args);
+    kent_complain(s->complaints, s->out->files[top(s)->file], line, "%s", what);
+}
+
+/* Appends bytes of the top source; notes where each new line of text comes from. */
+static void emit(scanner *s, const char *bytes, size_t count)
+{
+    kent_scan *out = s->out;
+    const source *from = top(s);
+    if (kent_grow((void **)&out->text, &out->text_capacity, out->length + count + 1,
+                  1) != 0) {
+        s->stopped = true;
+        (void)kent_error_nomem(s->err);
+        return;
+    }
+    const bool fresh = out->length == 0 || out->text[out->length - 1] == '\n';
+    if (fresh && count > 0) {
+        if (kent_grow((void **)&out->lines, &out->line_capacity, out->line_count + 1,
+                      sizeof *out->lines) != 0) {
+            s->stopped = true;
+            (void)kent_error_nomem(s->err);
+            return;
+        }
+        out->lines[out->line_count++] = (kent_place){from->file, from->line};
+    }
+    memcpy(out->text + out->length, bytes, count);
+    out->length += count;
+    out->text[out->length] = '\0';
+}
+
+/* ---- files ------------------------------------------------------------------------
+ */
+
+static kent_status slurp(FILE *file, size_t most, char **bytes, size_t *size,
+                         kent_error *err, const char *name)
+{
+    size_t capacity = 0;
+    *size = 0;
+    for (;;) {
+        if (kent_grow((void **)bytes, &capacity, *size + 65536 + 1, 1) != 0) {
+            return kent_error_nomem(err);
+        }
+        const size_t got = fread(*bytes + *size, 1, 65536, file);
+        *size += got;
+        if (ferror(file)) {
+            return kent_error_set(err, KENT_E_IO, name, "cannot be read: %s",
+                                  strerror(errno));
+        }
+        if (got == 0 || *size > most) break;
+    }
+    (*bytes)[*size] = '\0';
+    return KENT_OK;
+}
+
+/* Length in bytes of the UTF-8 sequence at p; 0: not one. p is NUL-terminated. */
+static size_t utf8_length(const unsigned char *p)
+{
+    if (p[0] < 0x80) return 1;
+    const size_t n = p[0] >= 0xF0 && p[0] <= 0xF4 ? 4
+                     : p[0] >= 0xE0               ? 3
+                     : p[0] >= 0xC2               ? 2
+                                                  : 0;
+    if (p[0] > 0xF4) return 0;
+    for (size_t i = 1; i < n; i++) {
+        if ((p[i] & 0xC0) != 0x80) return 0;
+    }
+    return n;
+}
+
+/* What no line of a file may hold. Returns whether lexing makes sense. */
+static bool bytes_are_text(scanner *s)
+{
+    source *src = top(s);
+    const unsigned char *p = (const unsigned char *)src->bytes;
+    if (src->size >= 3 && memcmp(p, "\xEF\xBB\xBF", 3) == 0) {
+        complain(
+            s, 1,
+            "the file starts with a byte-order mark; save it as UTF-8 without one");
+        return false;
+    }
+    if (src->size >= 2 &&
+        (memcmp(p, "\xFF\xFE", 2) == 0 || memcmp(p, "\xFE\xFF", 2) == 0)) {
+        complain(s, 1, "the file is UTF-16; save it as UTF-8");
+        return false;
+    }
+    int line = 1;
+    size_t start = 0;
+    for (size_t i = 0; i < src->size;) {
+        if (p[i] == '\0') {
+            complain(s, line,
+                     "the line holds a NUL byte; a case is plain text in UTF-8");
+            return false;
+        }
+        const size_t n = utf8_length(p + i);
+        if (n == 0) {
+            complain(s, line, "byte 0x%02X is not UTF-8; save the file as UTF-8",
+                     (unsigned)p[i]);
+            return false;
+        }
+        if (i - start > LINE_MOST) {
+            complain(s, line, "the line is longer than %d bytes; break it", LINE_MOST);
+            return false;
+        }
+        if (p[i] == '\n') {
+            line++;
+            start = i + 1;
+        }
+        i += n;
+    }
+    return true;
+}
+
+/* "\r\n" and lone "\r" become "\n". */
+static void unify_line_ends(source *src)
+{
+    size_t to = 0;
+    for (size_t i = 0; i < src->size; i++) {
+        if (src->bytes[i] != '\r') {
+            src->bytes[to++] = src->bytes[i];
+        } else if (src->bytes[i + 1] != '\n') {
+            src->bytes[to++] = '\n';
+        }
+    }
+    src->bytes[to] = '\0';
+    src->size = to;
+}
+
+static int file_add(scanner *s, const char *name)
+{
+    kent_scan *out = s->out;
+    if (kent_grow((void **)&out->files, &out->file_capacity, out->file_count + 1,
+                  sizeof *out->files) != 0) {
+        return -1;
+    }
+    out->files[out->file_count] = kent_copy_text(name);
+    if (!out->files[out->file_count]) return -1;
+    return (int)out->file_count++;
+}
+
+/* Puts an open file on the stack; takes nothing: the caller closes it. */
+static void push(scanner *s, FILE *file, const char *shown)
+{
+    source src = {.line = 1};
+    const int index = file_add(s, shown);
+    if (index < 0) {
+        (void)kent_error_nomem(s->err);
+        s->stopped = true;
+        return;
+    }
+    src.file = index;
+    if (slurp(file, SIZE_MOST - s->total, &src.bytes, &src.size, s->err, shown)) {
+        free(src.bytes);
+        s->stopped = true;
+        return;
+    }
+    s->total += src.size;
+    for (size_t i = 0; i < src.size; i++) {
+        s->out->checksum ^= (unsigned char)src.bytes[i];
+        s->out->checksum *= 1099511628211ULL;
+    }
+    s->stack[s->depth++] = src;
+    if (s->total > SIZE_MOST) {
+        complain(s, 0, "the case is larger than %d MB", SIZE_MOST / (1024 * 1024));
+        s->stopped = true;
+    } else if (!bytes_are_text(s)) {
+        s->stopped = true;
+    } else {
+        unify_line_ends(top(s));
+    }
+}
+
+static void pop(scanner *s)
+{
+    const kent_scan *out = s->out;
+    if (out->length > 0 && out->text[out->length - 1] != '\n') emit(s, "\n", 1);
+    free(top(s)->bytes);
+    s->depth--;
+}
+
+/* ---- lexemes ----------------------------------------------------------------------
+ */
+
+static bool is_name_start(char c)
+{
+    return (c >= 'A' && c <= 'Z') || (c >= 'a' && c <= 'z') || c == '*';
+}
+
+static bool is_digit(char c) { return c >= '0' && c <= '9'; }
+
+static bool is_name_part(char c)
+{
+    return is_name_start(c) || is_digit(c) || c == '_' || c == '-';
+}
+
+static const char *open_word(char open)
+{
+    return open == '{' ? "}" : open == '(' ? ")" : "]";
+}
+
+static void see_value(scanner *s)
+{
+    if (s->last == TOKEN_NAME) {
+        complain(s, top(s)->line, "'=' is missing after '%s'", s->last_name);
+    }
+    s->last = TOKEN_VALUE;
+}
+
+static size_t lex_string(scanner *s, const char *p)
+{
+    const int line = top(s)->line;
+    size_t n = 1;
+    while (p[n] != '"' && p[n] != '\n' && p[n] != '\0') {
+        n += p[n] == '\\' && p[n + 1] != '\0' && p[n + 1] != '\n' ? 2 : 1;
+    }
+    if (p[n] != '"') {
+        complain(s, line, "the text that starts here with \" does not end on its line");
+        s->stopped = true;
+    } else {
+        n++;
+    }
+    if (n > STRING_MOST) {
+        complain(s, line, "a text is longer than %d bytes", STRING_MOST);
+        s->stopped = true;
+    }
+    see_value(s);
+    return n;
+}
+
+static size_t lex_comment(scanner *s, const char *p)
+{
+    size_t n = 0;
+    if (p[1] == '*' && p[0] == '/') {
+        const char *end = strstr(p + 2, "*/");
+        if (end) return (size_t)(end - p) + 2;
+        complain(s, top(s)->line, "the comment that starts here with /* does not end");
+        s->stopped = true;
+        return strlen(p);
+    }
+    while (p[n] != '\n' && p[n] != '\0') {
+        n++;
+    }
+    return n;
+}
+
+static size_t number_length(const char *p)
+{
+    size_t n = 1;
+    const bool hex = p[0] == '0' && (p[1] == 'x' || p[1] == 'X');
+    while (is_name_part(p[n]) || p[n] == '.' || p[n] == '+') {
+        const bool sign = p[n] == '+' || p[n] == '-';
+        if (sign && (hex || (p[n - 1] != 'e' && p[n - 1] != 'E'))) break;
+        n++;
+    }
+    return n;
+}
+
+static void note_number(scanner *s, bool whole, int line)
+{
+    bracket *in = s->nest > 0 ? &s->brackets[s->nest - 1] : NULL;
+    if (!in || in->open != '[') return;
+    const bool mixed = in->whole && in->fraction;
+    in->whole = in->whole || whole;
+    in->fraction = in->fraction || !whole;
+    if (in->whole && in->fraction && !mixed) {
+        complain(s, line,
+                 "a list in [ ] mixes whole numbers and fractions; write every "
+                 "number with a decimal point, or use ( )");
+    }
+}
+
+static size_t lex_number(scanner *s, const char *p)
+{
+    const int line = top(s)->line;
+    const size_t n = number_length(p);
+    const size_t shown = n < LEXEME_SHOWN ? n : LEXEME_SHOWN;
+    char text[LEXEME_SHOWN + 1];
+    char *end = NULL;
+    memcpy(text, p, shown);
+    text[shown] = '\0';
+    const bool hex = text[0] == '0' && (text[1] == 'x' || text[1] == 'X');
+    const bool whole = hex || strcspn(text, ".eE") == shown;
+
+    errno = 0;
+    const double value = strtod(text, &end);
+    if (whole && *end == 'L') end += end[1] == 'L' ? 2 : 1;
+    if (*end != '\0' || n > LEXEME_SHOWN) {
+        complain(s, line,
+                 "'%s' is not a number; a value with a unit stands in quotes, as \"1.4 "
+                 "m\"",
+                 text);
+    } else if (whole && !(fabs(value) <= 2147483647.0)) {
+        complain(s, line, "%s is out of range; whole numbers go to 2147483647", text);
+    } else if (errno == ERANGE || !isfinite(value)) {
+        complain(s, line, "%s is out of range of any number", text);
+    }
+    note_number(s, whole, line);
+    see_value(s);
+    return n;
+}
+
+static size_t lex_name(scanner *s, const char *p)
+{
+    size_t n = 1;
+    while (is_name_part(p[n])) {
+        n++;
+    }
+    const int shown = (int)(n < LEXEME_SHOWN ? n : LEXEME_SHOWN);
+    const bool truth = (n == 4 && strncasecmp(p, "true", 4) == 0) ||
+                       (n == 5 && strncasecmp(p, "false", 5) == 0);
+    const bool inside = s->nest > 0 && s->brackets[s->nest - 1].open != '{';
+    if (truth && (s->last == TOKEN_EQUALS || inside)) {
+        see_value(s);
+    } else if (s->last == TOKEN_EQUALS || inside) {
+        complain(s, top(s)->line, "'%.*s' is text and must stand in quotes: \"%.*s\"",
+                 shown, p, shown, p);
+        s->last = TOKEN_VALUE;
+    } else {
+        if (s->last == TOKEN_NAME) {
+            complain(s, top(s)->line, "'=' is missing after '%s'", s->last_name);
+        }
+        (void)snprintf(s->last_name, sizeof s->last_name, "%.*s", shown, p);
+        s->last = TOKEN_NAME;
+    }
+    return n;
+}
+
+static void open_bracket(scanner *s, char open)
+{
+    const source *src = top(s);
+    if (s->nest == NEST_MOST) {
+        complain(s, src->line, "groups and lists are nested more than %d deep",
+                 NEST_MOST);
+        s->stopped = true;
+        return;
+    }
+    see_value(s);
+    s->last = TOKEN_OTHER;
+    s->brackets[s->nest++] =
+        (bracket){.open = open, .file = src->file, .line = src->line};
+}
+
+static void close_bracket(scanner *s, char close)
+{
+    const int line = top(s)->line;
+    if (s->nest == 0) {
+        complain(s, line, "'%c' closes nothing", close);
+        s->stopped = true;
+        return;
+    }
+    const bracket *in = &s->brackets[--s->nest];
+    if (*open_word(in->open) != close) {
+        complain(s, line, "'%c' stands where '%s' should close the '%c' of line %d",
+                 close, open_word(in->open), in->open, in->line);
+        s->stopped = true;
+    } else if (close != '}' && s->last == TOKEN_COMMA) {
+        complain(s, line, "a comma before '%c' leaves an empty place; take it out",
+                 close);
+    }
+    s->last = TOKEN_VALUE;
+}
+
+static size_t lex_sign(scanner *s, const char *p)
+{
+    switch (*p) {
+    case '{':
+    case '(':
+    case '[':
+        open_bracket(s, *p);
+        return 1;
+    case '}':
+    case ')':
+    case ']':
+        close_bracket(s, *p);
+        return 1;
+    case '=':
+    case ':':
+        s->last = TOKEN_EQUALS;
+        return 1;
+    case ',':
+        s->last = TOKEN_COMMA;
+        return 1;
+    case ';':
+        s->last = TOKEN_OTHER;
+        return 1;
+    default: {
+        const size_t n = utf8_length((const unsigned char *)p);
+        complain(s, top(s)->line,
+                 "'%.*s' cannot stand here; texts stand between straight quotes \" \"",
+                 (int)n, p);
+        return n > 0 ? n : 1;
+    }
+    }
+}
+
+/* ---- @include ---------------------------------------------------------------------
+ */
+
+static void include(scanner *s, const char *name, int line)
+{
+    char path[1024];
+    FILE *file = NULL;
+    if (name[0] == '/' || name[0] == '\0' || strstr(name, "..") || strchr(name, '\\')) {
+        complain(s, line,
+                 "@include \"%.60s\" leaves the folder of the case; only files of that "
+                 "folder can be included",
+                 name);
+        return;
+    }
+    if (s->depth == INCLUDE_MOST) {
+        complain(s, line,
+                 "@include \"%.60s\": files include each other more than %d deep", name,
+                 INCLUDE_MOST);
+        s->stopped = true;
+        return;
+    }
+    const int n =
+        snprintf(path, sizeof path, "%.*s%s", (int)s->folder_length, s->path, name);
+    if (n < 0 || (size_t)n >= sizeof path) {
+        complain(s, line, "@include \"%.60s\": the path is too long", name);
+        return;
+    }
+    file = fopen(path, "rb");
+    if (!file) {
+        complain(s, line, "@include \"%.60s\": %s", name, strerror(errno));
+        return;
+    }
+    push(s, file, path);
+    (void)fclose(file);
+}
+
+/* A line that starts with '@'; it is replaced by the file it names. */
+static void lex_include(scanner *s)
+{
+    source *src = top(s);
+    const char *p = src->bytes + src->at;
+    const int line = src->line;
+    const size_t length = strcspn(p, "\n");
+    char name[256];
+    size_t from = strlen("@include");
+
+    src->at += length;
+    if (strncmp(p, "@include", from) != 0) {
+        complain(s, line,
+                 "'@' cannot stand here; to take in a file write @include \"...\"");
+        return;
+    }
+    while (p[from] == ' ' || p[from] == '\t') {
+        from++;
+    }
+    const size_t end = p[from] == '"' ? from + 1 + strcspn(p + from + 1, "\"\n") : from;
+    if (p[from] != '"' || p[end] != '"' || end - from > sizeof name) {
+        complain(s, line, "@include needs a file name in quotes, alone on its line");
+        return;
+    }
+    const size_t rest = end + 1 + strspn(p + end + 1, " \t;");
+    if (rest != length && p[rest] != '#') {
+        complain(s, line, "@include needs a file name in quotes, alone on its line");
+        return;
+    }
+    memcpy(name, p + from + 1, end - from - 1);
+    name[end - from - 1] = '\0';
+    include(s, name, line);
+}
+
+/* ---- all --------------------------------------------------------------------------
+ */
+
+static void step(scanner *s)
+{
+    source *src = top(s);
+    const char *p = src->bytes + src->at;
+    size_t n = 1;
+
+    if (*p == '@') {
+        lex_include(s);
+        return;
+    }
+    if (*p == '"') {
+        n = lex_string(s, p);
+    } else if (*p == '#' || (*p == '/' && (p[1] == '/' || p[1] == '*'))) {
+        n = lex_comment(s, p);
+    } else if (is_digit(*p) || ((*p == '-' || *p == '+' || *p == '.') &&
+                                (is_digit(p[1]) || p[1] == '.'))) {
+        n = lex_number(s, p);
+    } else if (is_name_start(*p)) {
+        n = lex_name(s, p);
+    } else if (!strchr(" \t\n\f\v", *p)) {
+        n = lex_sign(s, p);
+    }
+    emit(s, p, n);
+    for (size_t i = 0; i < n; i++) {
+        if (p[i] == '\n') src->line++;
+    }
+    src->at += n;
+    /* A comment over several lines is emitted whole: map its later lines too. */
+    for (size_t i = 0, line = 0; i + 1 < n && !s->stopped; i++) {
+        if (p[i] != '\n') continue;
+        line++;
+        kent_scan *out = s->out;
+        if (kent_grow((void **)&out->lines, &out->line_capacity, out->line_count + 1,
+                      sizeof *out->lines) != 0) {
+            (void)kent_error_nomem(s->err);
+            s->stopped = true;
+            return;
+        }
+        out->lines[out->line_count] = out->lines[out->line_count - 1];
+        out->lines[out->line_count].line++;
+        out->line_count++;
+    }
+}
+
+static void scan_all(scanner *s)
+{
+    while (s->depth > 0 && !s->stopped) {
+        const source *src = top(s);
+        if (src->at < src->size) {
+            step(s);
+        } else if (s->depth > 1) {
+            pop(s);
+        } else {
+            break; /* the last one stays, so that complaints have a file */
+        }
+    }
+    if (s->depth > 0 && !s->stopped && s->nest > 0) {
+        const bracket *in = &s->brackets[s->nest - 1];
+        kent_complain(s->complaints, s->out->files[in->file], in->line,
+                      "the '%c' of this line is never closed by '%s'", in->open,
+                      open_word(in->open));
+    }
+    while (s->depth > 0) {
+        pop(s);
+    }
+}
+
+kent_status kent_scan_read(const char *path, kent_scan *out,
+                           kent_complaints *complaints, kent_error *err)
+{
+    const bool standard_input = strcmp(path, "-") == 0;
+    const char *slash = strrchr(path, '/');
+    const size_t before = complaints->count;
+    kent_status status = KENT_OK;
+    scanner *s = kent_alloc(1, sizeof *s);
+    FILE *file = standard_input ? stdin : fopen(path, "rb");
+
+    if (!s) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
+    if (!file) {
+        status = kent_error_set(err, KENT_E_IO, path, "cannot be opened: %s",
+                                strerror(errno));
+        goto done;
+    }
+    *s = (scanner){.out = out, .complaints = complaints, .err = err, .path = path};
+    s->folder_length = slash ? (size_t)(slash - path) + 1 : 0;
+    out->checksum = 14695981039346656037ULL;
+    push(s, file, standard_input ? "standard input" : path);
+    scan_all(s);
+    if (err->status != KENT_OK) {
+        status = err->status;
+    } else if (complaints->count > before) {
+        status = KENT_E_INPUT;
+    } else if (!out->text) {
+        kent_complain(complaints, out->files[0], 0, "the file is empty");
+        status = KENT_E_INPUT;
+    }
+done:
+    if (file && !standard_input) (void)fclose(file);
+    free(s);
+    return status;
+}
+
+void kent_scan_clear(kent_scan *s)
+{
+    for (size_t i = 0; i < s->file_count; i++) {
+        free(s->files[i]);
+    }
+    free(s->files);
+    free(s->lines);
+    free(s->text);
+    *s = (kent_scan){0};
+}
