@@ -124,8 +124,9 @@ static void put_branch_last(kent_port ports[3])
         }
     }
     const kent_port leg = ports[branch];
-    for (size_t i = branch; i < 2; i++)
+    for (size_t i = branch; i < 2; i++) {
         ports[i] = ports[i + 1];
+    }
     ports[2] = leg;
 }
 

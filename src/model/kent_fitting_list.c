@@ -7,8 +7,9 @@
 static void sort_notes(const kent_model *m, const kent_layout *l, int *note_of,
                        kent_complaints *complaints)
 {
-    for (size_t p = 0; p < m->point_count; p++)
+    for (size_t p = 0; p < m->point_count; p++) {
         note_of[p] = -1;
+    }
     for (size_t i = 0; i < m->note_count; i++) {
         const kent_fitting_note *note = &m->notes[i];
         if (note->port_count > 0) continue;

@@ -23,15 +23,19 @@ static void group_stops(const kent_model *m, kent_layout *l)
             l->pipe[pipe->route_first + k] = (int)i;
         }
     }
-    for (size_t s = 0; s < m->route_count; s++)
+    for (size_t s = 0; s < m->route_count; s++) {
         l->first[m->route[s] + 1]++;
-    for (size_t p = 0; p < m->point_count; p++)
+    }
+    for (size_t p = 0; p < m->point_count; p++) {
         l->first[p + 1] += l->first[p];
+    }
     /* Filled from the back, so that first[] ends where it began. */
-    for (size_t s = 0; s < m->route_count; s++)
+    for (size_t s = 0; s < m->route_count; s++) {
         l->stop[l->first[m->route[s]]++] = s;
-    for (size_t p = m->point_count; p > 0; p--)
+    }
+    for (size_t p = m->point_count; p > 0; p--) {
         l->first[p] = l->first[p - 1];
+    }
     l->first[0] = 0;
 }
 

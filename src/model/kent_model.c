@@ -58,8 +58,9 @@ void kent_model_free(kent_model *m)
 {
     if (!m) return;
     clear_derived(m);
-    for (size_t i = 0; i < m->file_count; i++)
+    for (size_t i = 0; i < m->file_count; i++) {
         free(m->files[i]);
+    }
     free((void *)m->files);
     free(m->points);
     free(m->pipes);

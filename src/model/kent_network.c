@@ -156,8 +156,9 @@ kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *com
             make_nodes_at(m, l, m->route[stop]);
         }
     }
-    for (size_t i = 0; i < m->pipe_count; i++)
+    for (size_t i = 0; i < m->pipe_count; i++) {
         cut_pipe(m, l, (int)i, complaints);
+    }
     group_ends(m);
     return KENT_OK;
 }
@@ -232,8 +233,9 @@ kent_status kent_network_check_connected(const kent_model *m,
     queue = kent_alloc(m->node_count, sizeof *queue);
     if (!part_of || !queue) goto done;
 
-    for (size_t n = 0; n < m->node_count; n++)
+    for (size_t n = 0; n < m->node_count; n++) {
         part_of[n] = -1;
+    }
     for (size_t n = 0; n < m->node_count; n++) {
         if (part_of[n] >= 0) continue;
         const size_t count = reach(m, (int)n, (int)n, part_of, queue);

@@ -62,8 +62,9 @@ void kent_ports_run_first(kent_port *ports, size_t count)
     }
     for (size_t to = 0; to < 2; to++) {
         const kent_port leg = ports[run[to]];
-        for (size_t i = run[to]; i > to; i--)
+        for (size_t i = run[to]; i > to; i--) {
             ports[i] = ports[i - 1];
+        }
         ports[to] = leg; /* run[1] > run[0], so the second stays where it was */
     }
 }

@@ -71,8 +71,9 @@ static void measure_surveyed(kent_model *m, const kent_pipe *pipe,
                        pipe->id, 100.0 * fabs(stretch - 1.0),
                        stretch > 1.0 ? "more" : "less");
     }
-    for (size_t k = 1; k < pipe->route_count; k++)
+    for (size_t k = 1; k < pipe->route_count; k++) {
         chainage[k] *= stretch;
+    }
     chainage[pipe->route_count - 1] = pipe->length; /* to the last bit */
 }
 
@@ -162,8 +163,9 @@ static double start_station(const kent_model *m, const kent_layout *l,
 
 void kent_route_stations(const kent_model *m, const kent_layout *l)
 {
-    for (size_t p = 0; p < m->point_count; p++)
+    for (size_t p = 0; p < m->point_count; p++) {
         l->station[p] = (double)NAN;
+    }
     for (size_t i = 0; i < m->pipe_count; i++) {
         const kent_pipe *pipe = &m->pipes[i];
         double here = start_station(m, l, pipe);

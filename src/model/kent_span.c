@@ -42,8 +42,9 @@ double kent_span_level(const kent_model *m, const kent_span *span, double chaina
     size_t s = span->route_first; /* the leg from stop s to s + 1 */
 
     assert(span->route_count >= 2);
-    while (s + 1 < last && m->chainage[s + 1] - from < chainage)
+    while (s + 1 < last && m->chainage[s + 1] - from < chainage) {
         s++;
+    }
     const double start = m->points[m->route[s]].at.z;
     const double end = m->points[m->route[s + 1]].at.z;
     const double leg = m->chainage[s + 1] - m->chainage[s];

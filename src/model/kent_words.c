@@ -51,22 +51,22 @@
 #define AS_CASE(name, word)                                                            \
     case name:                                                                         \
         return word;
-#define WORD_FUNCTION(function, type, LIST)                                            \
-    const char *function(type value)                                                   \
+#define WORD_FUNCTION(function, enumeration, name, LIST)                               \
+    const char *function(enumeration name)                                             \
     {                                                                                  \
-        switch (value) {                                                               \
+        switch (name) {                                                                \
             LIST(AS_CASE)                                                              \
         }                                                                              \
         return "unknown";                                                              \
     }
 
-WORD_FUNCTION(kent_fitting_type_word, kent_fitting_type, FITTING_TYPES)
-WORD_FUNCTION(kent_orientation_word, kent_orientation, ORIENTATIONS)
-WORD_FUNCTION(kent_joint_word, kent_joint, JOINTS)
-WORD_FUNCTION(kent_class_word, kent_class, CLASSES)
-WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, RESTRAINTS)
-WORD_FUNCTION(kent_friction_word, kent_friction_law, FRICTION_LAWS)
-WORD_FUNCTION(kent_axial_support_word, kent_axial_support, AXIAL_SUPPORTS)
+WORD_FUNCTION(kent_fitting_type_word, kent_fitting_type, type, FITTING_TYPES)
+WORD_FUNCTION(kent_orientation_word, kent_orientation, orientation, ORIENTATIONS)
+WORD_FUNCTION(kent_joint_word, kent_joint, joint, JOINTS)
+WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
+WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
+WORD_FUNCTION(kent_friction_word, kent_friction_law, law, FRICTION_LAWS)
+WORD_FUNCTION(kent_axial_support_word, kent_axial_support, support, AXIAL_SUPPORTS)
 
 bool kent_joint_slips(kent_joint joint)
 {

@@ -60,8 +60,9 @@ static void a_long_list_of_points_cut_off_is_shortened(void **state)
     kent_build b = sound();
     kent_build_fixed_level(&b, "R", 50.0);
     const char *ids[] = {"a", "b", "c", "d", "e", "f", "g"};
-    for (int i = 0; i < 7; i++)
+    for (int i = 0; i < 7; i++) {
         kent_build_point(&b, ids[i], 10.0 * i, 900.0, 0.0);
+    }
     for (int i = 0; i + 1 < 7; i++) {
         const char route[] = {ids[i][0], ' ', ids[i + 1][0], '\0'};
         kent_build_pipe(&b, ids[i], route, 0.3, 1000.0);
