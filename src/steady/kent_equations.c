@@ -82,8 +82,9 @@ static void fill_links(kent_equations *eq)
 static void fill_levels(kent_equations *eq)
 {
     const kent_model *m = eq->model;
-    for (size_t n = 0; n < eq->nodes; n++)
+    for (size_t n = 0; n < eq->nodes; n++) {
         eq->fixed_level[n] = -1;
+    }
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         const int n = m->fixed_levels[i].node;
         double area = 0.0; /* m2 */
@@ -152,8 +153,9 @@ static void fill_pattern(kent_equations *eq, int64_t *next)
 static void count_rows(kent_equations *eq)
 {
     int64_t *length = eq->row + 1;
-    for (size_t n = 0; n < eq->nodes; n++)
+    for (size_t n = 0; n < eq->nodes; n++) {
         length[n] = 1;
+    }
     for (size_t e = 0; e < eq->spans; e++) {
         length[eq->model->spans[e].node[0]]++;
         length[eq->model->spans[e].node[1]]++;
@@ -165,8 +167,9 @@ static void count_rows(kent_equations *eq)
         if (node[1] >= 0) length[node[1]]++;
         length[eq->nodes + eq->spans + i] = node[1] >= 0 ? 3 : 2;
     }
-    for (size_t i = 0; i < eq->size; i++)
+    for (size_t i = 0; i < eq->size; i++) {
         eq->row[i + 1] += eq->row[i];
+    }
 }
 
 kent_status kent_equations_new(const kent_model *m, kent_equations **out,
@@ -217,8 +220,9 @@ void kent_equations_start(const kent_equations *eq, double *x)
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         top = fmax(top, m->fixed_levels[i].level);
     }
-    for (size_t n = 0; n < eq->nodes; n++)
+    for (size_t n = 0; n < eq->nodes; n++) {
         x[n] = isfinite(top) ? top : 0.0;
+    }
     for (size_t e = 0; e < eq->spans; e++) {
         x[eq->nodes + e] = START_SPEED * m->spans[e].area;
     }
@@ -271,8 +275,9 @@ void kent_equations_residual(const kent_equations *eq, const double *x, double *
     const size_t first_link = eq->nodes + eq->spans;
     double slope = 0.0;
 
-    for (size_t n = 0; n < eq->nodes; n++)
+    for (size_t n = 0; n < eq->nodes; n++) {
         f[n] = node_residual(eq, x, n);
+    }
     for (size_t e = 0; e < eq->spans; e++) { /* (06.2) */
         const kent_span *span = &eq->model->spans[e];
         f[eq->nodes + e] = x[span->node[0]] - x[span->node[1]] -

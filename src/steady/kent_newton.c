@@ -10,7 +10,7 @@
 #include <string.h>
 
 enum {
-    SEARCH_LIMIT = 200, /* iterations of KINSOL */
+    SEARCH_LIMIT = 50,  /* iterations of KINSOL */
     POLISH_LIMIT = 60,  /* plain Newton steps after it */
     PATIENCE = 3,       /* steps without gain before polishing ends */
     PATIENCE_LOST = 30  /* the same where KINSOL gave up */
@@ -51,8 +51,9 @@ static int call_residual(N_Vector x, N_Vector f, void *data)
     double sum = 0.0;
 
     kent_equations_residual(nw->eq, N_VGetArrayPointer(x), N_VGetArrayPointer(f));
-    for (size_t i = 0; i < nw->eq->size; i++)
+    for (size_t i = 0; i < nw->eq->size; i++) {
         sum += fabs(value[i]);
+    }
     return isfinite(sum * sum) ? 0 : 1;
 }
 
@@ -68,8 +69,9 @@ static int call_derivatives(N_Vector x, N_Vector f, SUNMatrix j, void *data,
     (void)work1;
     (void)work2;
     /* KINSOL wipes the pattern before every call */
-    for (size_t i = 0; i <= eq->size; i++)
+    for (size_t i = 0; i <= eq->size; i++) {
         row[i] = (sunindextype)eq->row[i];
+    }
     for (int64_t k = 0; k < eq->row[eq->size]; k++) {
         column[k] = (sunindextype)eq->column[k];
     }
@@ -239,8 +241,9 @@ static bool find_worst(const kent_equations *eq, const double *f, kent_newton_en
 static double head_scale(const kent_equations *eq, const double *x)
 {
     double largest = 1.0;
-    for (size_t n = 0; n < eq->nodes; n++)
+    for (size_t n = 0; n < eq->nodes; n++) {
         largest = fmax(largest, fabs(x[n]));
+    }
     return largest;
 }
 
@@ -260,8 +263,9 @@ static kent_status newton_step(kent_newton *nw, double *x)
     if (nw->failed != KENT_OK) return nw->failed;
     nw->failed = kent_elimination_solve(nw->elimination, nw->f, nw->step);
     if (nw->failed != KENT_OK) return nw->failed;
-    for (size_t i = 0; i < eq->size; i++)
+    for (size_t i = 0; i < eq->size; i++) {
         x[i] -= nw->step[i];
+    }
     return KENT_OK;
 }
 

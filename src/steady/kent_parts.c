@@ -23,8 +23,9 @@ static void join(int *part, int a, int b)
 
 void kent_parts_find(const kent_model *m, const bool *passes, int *part)
 {
-    for (size_t n = 0; n < m->node_count; n++)
+    for (size_t n = 0; n < m->node_count; n++) {
         part[n] = (int)n;
+    }
     for (size_t e = 0; e < m->span_count; e++) {
         join(part, m->spans[e].node[0], m->spans[e].node[1]);
     }
@@ -34,6 +35,7 @@ void kent_parts_find(const kent_model *m, const bool *passes, int *part)
             join(part, v->node[0], v->node[1]);
         }
     }
-    for (size_t n = 0; n < m->node_count; n++)
+    for (size_t n = 0; n < m->node_count; n++) {
         part[n] = root(part, (int)n);
+    }
 }

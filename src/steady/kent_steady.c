@@ -11,7 +11,7 @@
 #include <string.h>
 
 enum {
-    ROUNDS_TOGETHER = 30, /* rounds in which every contradicted outflow moves */
+    ROUNDS_TOGETHER = 10, /* rounds in which every contradicted outflow moves */
     ROUNDS = 300          /* and then one at a time, to this many in all */
 };
 

@@ -85,8 +85,9 @@ static void one_array_may_hold_both_sides(void **state)
     assert_int_equal(kent_elimination_factor(el, value), KENT_OK);
     assert_int_equal(kent_elimination_solve(el, both, x), KENT_OK);
     assert_int_equal(kent_elimination_solve(el, both, both), KENT_OK);
-    for (size_t i = 0; i < eq->size; i++)
+    for (size_t i = 0; i < eq->size; i++) {
         assert_true(both[i] == x[i]);
+    }
     kent_elimination_free(el);
     kent_equations_free(eq);
     kent_build_clear(&b);

@@ -1,3 +1,4 @@
+#include "kent_alloc_fail.h"
 #include "kent_build.h"
 #include "kent_check.h"
 #include "kent_steady.h"
@@ -168,7 +169,7 @@ static void check_all(const kent_model *m, const kent_steady *s)
     for (size_t i = 0; i < m->span_count; i++) {
         flow = fmax(flow, fabs(s->span_flow[i]));
     }
-    check_continuity(m, s, 4e-16 * fmax(flow, 1e-3));
+    check_continuity(m, s, 1e-15 * fmax(flow, 1e-3));
     check_energy(m, s, 1e-13 * head);
     check_levels(m, s, 1e-13 * head);
     check_valves(m, s, 1e-13 * head);
@@ -295,8 +296,9 @@ static double equivalent_drop(int three, double bore, double length)
 {
     kent_build b = kent_build_new();
     const char *ids[] = {"R", "A", "B", "C", "D"};
-    for (int i = 0; i < 5; i++)
+    for (int i = 0; i < 5; i++) {
         add_point(&b, ids[i], 100.0 * i, 0.0);
+    }
     add_pipe(&b, "R1", "R A", 0.6, 100.0, 0.02);
     if (three == 0) add_pipe(&b, "E1", "A D", bore, length, 0.02);
     if (three == 1) {
@@ -374,8 +376,9 @@ static void a_loop_shares_the_flow_and_a_dead_end_has_none(void **state)
     (void)state;
     kent_build b = kent_build_new();
     const char *ids[] = {"R", "A", "D", "X"};
-    for (int i = 0; i < 4; i++)
+    for (int i = 0; i < 4; i++) {
         add_point(&b, ids[i], 300.0 * i, 0.0);
+    }
     add_pipe(&b, "M", "R A", 0.5, 300.0, 0.02);
     add_pipe(&b, "P", "A D", 0.4, 900.0, 0.02);
     add_pipe(&b, "Q", "A D", 0.25, 500.0, 0.02);
@@ -404,8 +407,9 @@ static void nothing_moves_behind_a_closed_valve(void **state)
     for (int law = 0; law < 5; law++) {
         kent_build b = kent_build_new();
         const char *ids[] = {"R", "A", "B", "V"};
-        for (int i = 0; i < 4; i++)
+        for (int i = 0; i < 4; i++) {
             add_point(&b, ids[i], 300.0 * i, 0.0);
+        }
         const char *routes[] = {"R A", "A B", "A B", "B V"};
         for (int i = 0; i < 4; i++) {
             const char name[] = {(char)('p' + i), '\0'};
@@ -435,8 +439,9 @@ static void equal_levels_leave_hazen_williams_pipes_at_rest(void **state)
     (void)state;
     kent_build b = kent_build_new();
     const char *ids[] = {"R", "A", "S"};
-    for (int i = 0; i < 3; i++)
+    for (int i = 0; i < 3; i++) {
         add_point(&b, ids[i], 800.0 * i, 0.0);
+    }
     for (int i = 0; i < 2; i++) {
         const int p = add_pipe(&b, i ? "B" : "A", i ? "A S" : "R A", 0.4, 800.0, 110.0);
         b.model->pipes[p].friction = KENT_HAZEN_WILLIAMS;
@@ -530,8 +535,9 @@ static void the_static_level_looks_through_closed_valves_only(void **state)
     (void)state;
     kent_build b = kent_build_new();
     const char *ids[] = {"R", "V", "S", "P", "Q"};
-    for (int i = 0; i < 5; i++)
+    for (int i = 0; i < 5; i++) {
         kent_build_point(&b, ids[i], 100.0 * i, 0.0, 0.0);
+    }
     add_pipe(&b, "A", "R V", 0.3, 100.0, 0.02);
     add_pipe(&b, "B", "V S", 0.3, 100.0, 0.02);
     add_pipe(&b, "C", "P Q", 0.3, 100.0, 0.02);
@@ -741,11 +747,11 @@ static double chance(unsigned *seed)
 
 static int any(unsigned *seed, int count) { return (int)(chance(seed) * count); }
 
-static void random_pipe(kent_build *b, unsigned *seed, int number, int from, int to)
+static void random_pipe(kent_build *b, unsigned *seed, const char *from, const char *to)
 {
-    char id[16], route[32];
-    (void)snprintf(id, sizeof id, "p%d", number);
-    (void)snprintf(route, sizeof route, "n%d n%d", from, to);
+    char id[24], route[48];
+    (void)snprintf(id, sizeof id, "p%zu", b->model->pipe_count);
+    (void)snprintf(route, sizeof route, "%s %s", from, to);
     const int p = add_pipe(b, id, route, 0.08 + 0.6 * chance(seed),
                            5.0 + 2000.0 * chance(seed), 0.02);
     kent_pipe *pipe = &b->model->pipes[p];
@@ -758,12 +764,50 @@ static void random_pipe(kent_build *b, unsigned *seed, int number, int from, int
     pipe->loss = any(seed, 3) ? 0.0 : 5.0 * chance(seed);
 }
 
-/* A tree of points with chords; devices at the leaves and along. */
+/* A valve at a point of its own; level NONE: in line. */
+static void random_valve(kent_build *b, unsigned *seed, double level, double least)
+{
+    char id[24], at[24];
+    (void)snprintf(id, sizeof id, "V%zu", b->model->valve_count);
+    (void)snprintf(at, sizeof at, "v%zu", b->model->valve_count);
+    const int v = kent_build_valve(b, id, at, 0.01 + 0.5 * chance(seed), level);
+    b->model->valves[v].opening = fmax(least, 1.3 * chance(seed) - 0.2);
+    b->model->valves[v].opening = fmin(b->model->valves[v].opening, 1.0);
+}
+
+/* A pipe, one in four with a valve in line; least: its opening. */
+static void random_way(kent_build *b, unsigned *seed, int from, int to, double least)
+{
+    char start[24], end[24], middle[24];
+    (void)snprintf(start, sizeof start, "n%d", from);
+    (void)snprintf(end, sizeof end, "n%d", to);
+    (void)snprintf(middle, sizeof middle, "v%zu", b->model->valve_count);
+    if (any(seed, 4)) {
+        random_pipe(b, seed, start, end);
+        return;
+    }
+    kent_build_point(b, middle, 50.0 * from + 20.0, 500.0 * chance(seed), 0.0);
+    random_pipe(b, seed, start, middle);
+    random_pipe(b, seed, middle, end);
+    random_valve(b, seed, NONE, least);
+}
+
+/* A pipe away from a point to a valve that discharges. */
+static void random_outlet(kent_build *b, unsigned *seed, int from)
+{
+    char start[24], end[24];
+    (void)snprintf(start, sizeof start, "n%d", from);
+    (void)snprintf(end, sizeof end, "v%zu", b->model->valve_count);
+    kent_build_point(b, end, 50.0 * from + 30.0, 500.0 * chance(seed), 0.0);
+    random_pipe(b, seed, start, end);
+    random_valve(b, seed, 60.0 * chance(seed), 0.0);
+}
+
+/* A tree of points with chords, which alone may have a closed valve in them. */
 static kent_build random_network(unsigned *seed)
 {
     kent_build b = kent_build_new();
     const int points = 4 + any(seed, 20);
-    int pipes = 0;
     char id[16];
 
     for (int i = 0; i < points; i++) {
@@ -771,10 +815,11 @@ static kent_build random_network(unsigned *seed)
         kent_build_point(&b, id, 50.0 * i, 500.0 * chance(seed), 40.0 * chance(seed));
     }
     for (int i = 1; i < points; i++) {
-        random_pipe(&b, seed, pipes++, i < 3 ? 0 : i - 1 - any(seed, 3), i);
+        random_way(&b, seed, i < 3 ? 0 : i - 1 - any(seed, 3), i, 0.05);
     }
     for (int i = 0; i + 3 < points; i += 2) { /* few enough legs at any point */
-        random_pipe(&b, seed, pipes++, i, i + 2 + any(seed, 2));
+        random_way(&b, seed, i, i + 2 + any(seed, 2), 0.0);
+        if (!any(seed, 5)) random_outlet(&b, seed, i);
     }
     for (int i = 0; i < points; i++) {
         const int what = i == 0 ? 0 : any(seed, 8);
@@ -887,6 +932,34 @@ static void a_failure_says_why_and_where(void **state)
     kent_build_clear(&c);
 }
 
+static int solve_once(void *context)
+{
+    const kent_model *m = context;
+    kent_steady *s = NULL;
+    kent_error err = {0};
+    const kent_status status = kent_steady_solve(m, &s, &err);
+    if (status != KENT_OK) {
+        if (status != KENT_E_NOMEM) fail_msg("%s", err.what);
+        assert_int_equal(err.status, KENT_E_NOMEM);
+        assert_null(s);
+    }
+    kent_steady_free(s);
+    return status == KENT_OK ? 0 : -1;
+}
+
+static void any_allocation_may_fail(void **state)
+{
+    (void)state;
+    unsigned seed = 3u;
+    kent_build b = random_network(&seed);
+    kent_build_derive(&b);
+    assert_true(kent_allocations_needed(solve_once, b.model) > 20);
+    kent_allocations_grant(0);
+    assert_true(isnan(kent_static_level(b.model, 0)));
+    kent_allocations_grant(-1);
+    kent_build_clear(&b);
+}
+
 static void a_model_without_a_network_has_an_empty_steady_state(void **state)
 {
     (void)state;
@@ -929,6 +1002,7 @@ int main(void)
         cmocka_unit_test(the_same_network_gives_the_same_bits),
         cmocka_unit_test(a_grid_of_three_thousand_junctions_is_solved),
         cmocka_unit_test(a_failure_says_why_and_where),
+        cmocka_unit_test(any_allocation_may_fail),
         cmocka_unit_test(a_model_without_a_network_has_an_empty_steady_state),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
