@@ -111,20 +111,20 @@ static void derive_face(const kent_holding_work *w, kent_holding *h)
     derive_reached(w, h, KENT_SIDEWAYS, "qr/q");
 }
 
-/* Weight of a cubic metre of the block, in water where it stands in it. */
-static const char *derive_concrete(const kent_holding_work *w, kent_holding *h)
+/* Weight of a cubic metre of the block: gc, or gb where it stands in water (true). */
+static bool derive_concrete(const kent_holding_work *w, kent_holding *h)
 {
     kent_derivation *d = &h->derivation;
     const kent_rules *r = &w->m->rules;
 
     rule(d, "gc", r->concrete_unit_weight, KENT_UNIT_WEIGHT, "unit weight of concrete");
-    if (!h->block.submerged) return "gc";
+    if (!h->block.submerged) return false;
     rule(d, "gw", r->water_unit_weight, KENT_UNIT_WEIGHT,
          "unit weight of ground water");
-    kent_derivation_work(d, "gs", r->concrete_unit_weight - r->water_unit_weight,
+    kent_derivation_work(d, "gb", r->concrete_unit_weight - r->water_unit_weight,
                          KENT_UNIT_WEIGHT, "gc - gw", "10.12",
                          "unit weight under water");
-    return "gs";
+    return true;
 }
 
 static void derive_gravity(const kent_holding_work *w, kent_holding *h)
@@ -137,11 +137,11 @@ static void derive_gravity(const kent_holding_work *w, kent_holding *h)
 
     kent_derivation_heading(d, "Weight for the upward thrust");
     derive_depth(w, h);
-    const bool wet = derive_concrete(w, h)[1] == 's';
+    const bool wet = derive_concrete(w, h);
     const double unit_weight =
         r->concrete_unit_weight - (wet ? r->water_unit_weight : 0.0);
     kent_derivation_work(d, "V0", kent_gravity_volume(up, 1.0, unit_weight),
-                         KENT_VOLUME, wet ? "Fup/gs" : "Fup/gc", "10.13",
+                         KENT_VOLUME, wet ? "Fup/gb" : "Fup/gc", "10.13",
                          "concrete that weighs as much");
     if (down > 0.0) {
         kent_derivation_put(d, "qv", w->site.vertical, KENT_STRESS,
@@ -161,7 +161,7 @@ static void derive_gravity(const kent_holding_work *w, kent_holding *h)
                              "depth of the block's base");
     }
     kent_derivation_work(d, "V", b->volume, KENT_VOLUME, "a*a*hg", "10.8", "concrete");
-    derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(V*gs)" : "Fup/(V*gc)");
+    derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(V*gb)" : "Fup/(V*gc)");
     if (down > 0.0) derive_reached(w, h, KENT_DOWNWARD, "Fdn/(a*a*qv)");
 }
 
@@ -190,9 +190,9 @@ static void derive_base(const kent_holding_work *w, kent_holding *h)
                          UP("max(tmin, (max(b1, b2) - OD)/2)"), "10.7",
                          "thickness: spread from pipe to base within 45 degrees");
     if (lifted) {
-        const bool wet = derive_concrete(w, h)[1] == 's';
+        const bool wet = derive_concrete(w, h);
         kent_derivation_work(d, "tw", b->thickness, KENT_LENGTH,
-                             wet ? "max(t, " UP("Fup/gs/(b1*b2)") ")"
+                             wet ? "max(t, " UP("Fup/gb/(b1*b2)") ")"
                                  : "max(t, " UP("Fup/gc/(b1*b2)") ")",
                              "10.13", "thickness that also weighs enough");
     }
@@ -202,7 +202,7 @@ static void derive_base(const kent_holding_work *w, kent_holding *h)
                          "10.9", "bearing pressure reached");
     derive_reached(w, h, KENT_DOWNWARD, "qr/qv");
     if (lifted) {
-        derive_reached(w, h, KENT_UPWARD, b->submerged ? "Fup/(V*gs)" : "Fup/(V*gc)");
+        derive_reached(w, h, KENT_UPWARD, b->submerged ? "Fup/(V*gb)" : "Fup/(V*gc)");
     }
 }
 

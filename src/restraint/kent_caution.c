@@ -4,8 +4,8 @@
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
 static const double KNOCK = 0.1;
 
-/* A presumptive bearing that asks for a steeper passive coefficient than this, where
- * the friction angle is not known, is unlikely: friction angles above 42 degrees. */
+/* A presumptive bearing that asks for a larger passive coefficient than this is
+ * unlikely: it takes a friction angle above 42 degrees. */
 static const double STEEPEST_PASSIVE = 5.0;
 
 /* N: beyond it the concrete itself wants designing. CIRIA Report 128 (1994) covers
@@ -64,22 +64,19 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
     const double water = fmax(0.0, axis - w->site.water_table);
     const double stress = s->unit_weight * axis - water * w->m->rules.water_unit_weight;
     const double claimed = s->allowable_bearing * s->factor_inside;
-    if (!isnan(s->friction_angle) && !isnan(s->cohesion)) {
-        const double passive =
-            kent_passive_pressure(s->friction_angle, s->cohesion, stress);
-        if (claimed <= passive) return;
-        kent_notes_add(
-            &h->cautions,
-            "soil '%s': %s with the factor inside it is more than the passive "
-            "pressure at the pipe's axis by Rankine, %s",
-            s->id, kent_say(units, KENT_STRESS, claimed).s,
-            kent_say(units, KENT_STRESS, passive).s);
-    } else if (claimed > STEEPEST_PASSIVE * stress) {
+    if (!(claimed > STEEPEST_PASSIVE * stress)) return;
+    if (isnan(s->friction_angle)) {
         kent_notes_add(&h->cautions,
                        "soil '%s': %s at this depth asks for a passive coefficient of "
                        "%.1f, which is unlikely",
                        s->id, kent_say(units, KENT_STRESS, claimed).s,
                        claimed / stress);
+    } else {
+        kent_notes_add(&h->cautions,
+                       "soil '%s': %s at this depth asks for a passive coefficient of "
+                       "%.1f; its friction angle gives %.1f",
+                       s->id, kent_say(units, KENT_STRESS, claimed).s, claimed / stress,
+                       kent_rankine_passive(s->friction_angle));
     }
 }
 

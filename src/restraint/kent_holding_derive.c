@@ -7,10 +7,10 @@
 static const struct sense_words {
     const char *part, *formula, *factored, *formula_factored, *says;
 } SENSES[KENT_SENSES] = {
-    [KENT_RESULTANT] = {"T", "sqrt(Tx^2 + Ty^2 + Tz^2)", "F", "SF*T", "whole thrust"},
-    [KENT_SIDEWAYS] = {"Th", "sqrt(Tx^2 + Ty^2)", "Fh", "SF*Th", "sideways thrust"},
-    [KENT_UPWARD] = {"Tup", "Tz", "Fup", "SF*Tup", "upward thrust"},
-    [KENT_DOWNWARD] = {"Tdn", "-Tz", "Fdn", "SF*Tdn", "downward thrust"},
+    [KENT_RESULTANT] = {"T", "sqrt(T_x^2+T_y^2+T_z^2)", "F", "SF*T", "whole thrust"},
+    [KENT_SIDEWAYS] = {"T_h", "sqrt(T_x^2+T_y^2)", "Fh", "SF*T_h", "sideways thrust"},
+    [KENT_UPWARD] = {"T_up", "T_z", "Fup", "SF*T_up", "upward thrust"},
+    [KENT_DOWNWARD] = {"T_dn", "-T_z", "Fdn", "SF*T_dn", "downward thrust"},
 };
 
 kent_source kent_soil_source(const kent_soil *soil)
@@ -21,9 +21,9 @@ kent_source kent_soil_source(const kent_soil *soil)
 /* Whether the sum of the momentum table that stands above is this thrust. */
 static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
 {
-    const kent_line *x = kent_derivation_find(d, "Tx");
-    const kent_line *y = kent_derivation_find(d, "Ty");
-    const kent_line *z = kent_derivation_find(d, "Tz");
+    const kent_line *x = kent_derivation_find(d, "T_x");
+    const kent_line *y = kent_derivation_find(d, "T_y");
+    const kent_line *z = kent_derivation_find(d, "T_z");
     const double near = 1e-9 * kent_vec3_length(thrust);
 
     return x && y && z && fabs(x->value - thrust.x) <= near &&
@@ -44,7 +44,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
                    c->name);
     kent_derivation_heading(d, says);
     if (derivation_has(d, c->worst[sense].balance.thrust)) {
-        kent_derivation_work(d, word->part, part, KENT_FORCE, word->formula, "8.1",
+        kent_derivation_work(d, word->part, part, KENT_FORCE, word->formula, "8.8",
                              word->says);
     } else {
         kent_derivation_put(d, word->part, part, KENT_FORCE, KENT_COMPUTED, word->says);

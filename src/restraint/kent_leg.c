@@ -289,7 +289,7 @@ static bool leg_ground(const kent_model *m, const kent_port *p, double length,
     for (size_t i = route_search(m, span, from); i < end; i++) {
         if (m->chainage[i] - m->chainage[span->route_first] > to) break;
         const kent_soil *soil = kent_point_soil(m, m->route[i]);
-        if (kent_soil_counts(soil)) continue;
+        if (!soil || kent_soil_counts(soil)) continue; /* not stated: the fitting's */
         kent_notes_add(notes,
                        "the restrained length runs into ground at %s that gives no "
                        "restraint: carry it through by as much again as lies there",

@@ -33,12 +33,12 @@ static void derive_weight(const kent_holding_work *w, const kent_leg_work *k,
                         "density of the water");
     kent_derivation_work(d, "Ww", k->trench.water_weight, KENT_FORCE_PER_LENGTH,
                          "rho*g*pi*ID^2/4", "11.2", "weight of the water in it");
-    kent_derivation_put(d, "gs", k->soil->unit_weight, KENT_UNIT_WEIGHT,
-                        kent_soil_source(k->soil), "unit weight of the soil");
+    kent_derivation_put(d, "gt", k->soil->unit_weight, KENT_UNIT_WEIGHT,
+                        kent_soil_source(k->soil), "unit weight of the soil in place");
     if (k->displaced <= 0.0) return;
     kent_derivation_put(d, "gw", w->m->rules.water_unit_weight, KENT_UNIT_WEIGHT,
                         KENT_CATALOGUE, "unit weight of ground water");
-    kent_derivation_work(d, "gs", k->trench.unit_weight, KENT_UNIT_WEIGHT, "gs - gw",
+    kent_derivation_work(d, "ge", k->trench.unit_weight, KENT_UNIT_WEIGHT, "gt - gw",
                          "11.12", "unit weight of the soil under water");
     kent_derivation_work(d, "Wb", k->displaced, KENT_FORCE_PER_LENGTH, "gw*pi*OD^2/4",
                          "11.13", "weight of the ground water displaced");
@@ -50,15 +50,16 @@ static void derive_friction(const kent_leg_work *k, kent_derivation *d)
     const kent_trench *t = &k->trench;
     const double adhesion = k->grip.friction_whole - k->grip.friction; /* of half */
     const double friction = k->bend ? k->grip.friction : k->grip.friction_whole;
-    const bool sticks = t->cohesion > 0.0;
+    const bool sticks = t->cohesion > 0.0, wet = k->displaced > 0.0;
+    const bool sleeved = k->sleeve < 1.0;
 
-    kent_derivation_work(d, "We", k->grip.earth_load, KENT_FORCE_PER_LENGTH, "gs*H*OD",
-                         "11.3", "weight of the soil above");
-    kent_derivation_work(d, "W",
-                         2.0 * k->grip.earth_load + t->pipe_weight + t->water_weight,
-                         KENT_FORCE_PER_LENGTH,
-                         k->displaced > 0.0 ? "2*We + Wp + Ww - Wb" : "2*We + Wp + Ww",
-                         "11.4", "load on top and bottom of the pipe");
+    kent_derivation_work(d, "We", k->grip.earth_load, KENT_FORCE_PER_LENGTH,
+                         wet ? "ge*H*OD" : "gt*H*OD", "11.3",
+                         "weight of the soil above");
+    kent_derivation_work(
+        d, "W", 2.0 * k->grip.earth_load + t->pipe_weight + t->water_weight,
+        KENT_FORCE_PER_LENGTH, wet ? "2*We + Wp + Ww - Wb" : "2*We + Wp + Ww", "11.4",
+        "load on top and bottom of the pipe");
     kent_derivation_put(d, "phi", t->friction_angle, KENT_ANGLE, from,
                         "friction angle of the soil");
     kent_derivation_put(d, "fphi", t->friction_ratio, KENT_RATIO, from,
@@ -73,13 +74,13 @@ static void derive_friction(const kent_leg_work *k, kent_derivation *d)
                              k->bend ? "adhesion on half the perimeter"
                                      : "adhesion on the whole perimeter");
     }
-    kent_derivation_work(d, "Fs", friction, KENT_FORCE_PER_LENGTH,
+    kent_derivation_work(d, sleeved ? "Fs0" : "Fs", friction, KENT_FORCE_PER_LENGTH,
                          sticks ? "Fc + W*tan(fphi*phi)" : "W*tan(fphi*phi)", "11.5",
                          "friction on the pipe");
-    if (k->sleeve >= 1.0) return;
+    if (!sleeved) return;
     kent_derivation_put(d, "kw", k->sleeve, KENT_RATIO, KENT_CATALOGUE,
                         "sleeved pipe over bare pipe");
-    kent_derivation_work(d, "Fs", k->friction, KENT_FORCE_PER_LENGTH, "kw*Fs", "11.14",
+    kent_derivation_work(d, "Fs", k->friction, KENT_FORCE_PER_LENGTH, "kw*Fs0", "11.14",
                          "friction on the sleeved pipe");
 }
 
@@ -91,7 +92,8 @@ static void derive_bearing(const kent_leg_work *k, kent_derivation *d)
     kent_derivation_work(d, "Kp", kent_rankine_passive(t->friction_angle), KENT_RATIO,
                          "(1 + sin(phi))/(1 - sin(phi))", "10.18",
                          "passive coefficient by Rankine");
-    kent_derivation_work(d, "sa", stress, KENT_STRESS, "gs*(H + OD/2)", "11.6",
+    kent_derivation_work(d, "sa", stress, KENT_STRESS,
+                         k->displaced > 0.0 ? "ge*(H + OD/2)" : "gt*(H + OD/2)", "11.6",
                          "weight of soil above the axis");
     kent_derivation_work(
         d, "Pp", kent_passive_pressure(t->friction_angle, t->cohesion, stress),
@@ -129,6 +131,20 @@ static void derive_length(const kent_holding_work *w, const kent_holding *h,
         k->bears ? "restrained length" : "restrained length, by friction alone");
 }
 
+/* An earlier leg of the same pipe and length, whose lines would only be repeated. */
+static bool leg_repeats(const kent_holding_work *w, const kent_holding *h,
+                        const kent_leg *leg)
+{
+    const kent_port *ports = &w->m->ports[w->fitting->port_first];
+    const int pipe = w->m->spans[ports[leg->port].span].pipe;
+
+    for (const kent_leg *k = h->legs; k < leg; k++) {
+        const int other = w->m->spans[ports[k->port].span].pipe;
+        if (other == pipe && !(fabs(k->length - leg->length) > 0.0)) return true;
+    }
+    return false;
+}
+
 void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg)
 {
     kent_derivation *d = &h->derivation;
@@ -139,10 +155,13 @@ void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg
     if (kent_leg_prepare(w->m, w->fitting, leg->port, w->pull, w->pull_factor, &k)) {
         return;
     }
-    (void)snprintf(says, sizeof says, "Restrained length along %s%s%s", k.pipe->id,
+    const bool again = leg_repeats(w, h, leg);
+    (void)snprintf(says, sizeof says, "%s along %s%s%s",
+                   again ? "The same length" : "Restrained length", k.pipe->id,
                    p->toward >= 0 ? " towards " : "",
                    p->toward >= 0 ? w->m->points[p->toward].id : "");
     kent_derivation_heading(d, says);
+    if (again) return;
     derive_weight(w, &k, d);
     derive_friction(&k, d);
     if (k.bears) derive_bearing(&k, d);

@@ -1,0 +1,178 @@
+/* Every line of every hand calculation, worked out again from the digits it prints. */
+#include "kent_hand.h"
+#include "kent_arith.h"
+
+#include <math.h>
+#include <string.h>
+
+static const double DEGREE = 3.14159265358979323846 / 180.0; /* rad */
+
+static const kent_hand_case CASES[] = {{"test", KENT_CASE_TEST, 1.2, 1.2e6},
+                                       {"static", KENT_CASE_STATIC, 1.5, 0.8e6},
+                                       {"shut", KENT_CASE_OCCASIONAL, 1.5, 1.0e6}};
+
+/* A main with one of everything that is held: a crest at B, a plan bend at C, a turn in
+ * plan and profile at D, a sag at F, a tee at T with a branch to S, a reducer at G, a
+ * dead end at E. Cover 1.6 m. */
+static kent_build main_of_everything(void)
+{
+    kent_build b = kent_build_new();
+
+    (void)kent_build_point(&b, "A", 0.0, 0.0, 40.0);
+    (void)kent_build_point(&b, "B", 150.0, 0.0, 60.0);
+    (void)kent_build_point(&b, "C", 300.0, 0.0, 60.0);
+    (void)kent_build_point(&b, "D", 440.0, 50.0, 60.0);
+    (void)kent_build_point(&b, "F", 560.0, 170.0, 40.0);
+    (void)kent_build_point(&b, "T", 700.0, 310.0, 40.0);
+    (void)kent_build_point(&b, "S", 760.0, 250.0, 40.0);
+    (void)kent_build_point(&b, "G", 800.0, 410.0, 40.0);
+    (void)kent_build_point(&b, "E", 900.0, 510.0, 40.0);
+    const int p = kent_build_pipe(&b, "P", "A B C D F T G", 0.5, 1000.0);
+    (void)kent_build_pipe(&b, "Q", "T S", 0.2, 1000.0);
+    (void)kent_build_pipe(&b, "R", "G E", 0.3, 1000.0);
+    b.model->pipes[p].laying_length = 5.5;
+    b.model->pipes[2].unit_mass = 78.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_scenario(&b, "shut", 60.0);
+    b.model->loads.test_pressure = 1.2e6;
+    const int t = kent_build_soil(&b, "till", 180e3, 19e3, 1.6);
+    kent_soil *till = &b.model->soils[t];
+    till->factor_inside = 1.5;
+    till->vertical_bearing = 120e3;
+    till->friction_angle = 28.0 * DEGREE;
+    till->cohesion = 4e3;
+    till->friction_ratio = 0.7;
+    till->adhesion_ratio = 0.5;
+    till->passive_ratio = 0.6;
+    b.model->ground.water_table = (double)INFINITY;
+    return b;
+}
+
+/* Returns how many formulas were worked out. */
+static size_t check_lines(const char *id, const kent_derivation *d, kent_system system)
+{
+    size_t checked = 0;
+
+    for (size_t i = 0; i < d->count; i++) {
+        const kent_line *line = &d->lines[i];
+        char digits[512], printed[64], why[1024];
+        if (line->formula[0] == '\0') continue;
+        kent_line_numbers(d, i, system, digits, sizeof digits);
+        kent_line_value(line, system, printed, sizeof printed);
+        if (!kent_arith_agrees(digits, printed, why, sizeof why)) {
+            fail_msg("%s: %s = %s: %s", id, line->symbol, line->formula, why);
+        }
+        checked++;
+    }
+    return checked;
+}
+
+static void check_all(kent_build *b, size_t least)
+{
+    kent_build_derive(b);
+    kent_restraints *r = kent_hand_size(b, CASES, 3);
+    size_t checked = 0;
+
+    for (size_t i = 0; i < r->fitting_count; i++) {
+        const kent_derivation *d = &r->fittings[i].derivation;
+        checked += check_lines(b->model->fittings[i].id, d, KENT_SI);
+        checked += check_lines(b->model->fittings[i].id, d, KENT_US);
+    }
+    assert_true(checked >= least);
+    kent_restraints_free(r);
+    kent_build_clear(b);
+}
+
+static void every_printed_line_follows_from_the_digits_above_it(void **state)
+{
+    (void)state;
+    kent_build b = main_of_everything();
+    check_all(&b, 300);
+}
+
+static void so_it_does_in_ground_water_and_in_sleeves(void **state)
+{
+    (void)state;
+    kent_build b = main_of_everything();
+    b.model->ground.water_table = 0.7;
+    b.model->ground.wrapped = true;
+    check_all(&b, 300);
+}
+
+static void so_it_does_in_inches(void **state)
+{
+    (void)state;
+    kent_build b = main_of_everything();
+    b.model->units = KENT_US;
+    b.model->rules.side_step = 0.0508;
+    b.model->rules.least_thickness = 0.3048;
+    b.model->rules.least_height = 0.3048;
+    check_all(&b, 300);
+}
+
+static void so_it_does_with_restrained_joints(void **state)
+{
+    (void)state;
+    static const char *const AT[] = {"B", "C", "D", "F", "T", "G", "E"};
+    kent_build b = main_of_everything();
+
+    for (size_t i = 0; i < sizeof AT / sizeof AT[0]; i++) {
+        const int note = kent_build_note(&b, AT[i]);
+        b.model->notes[note].restraint = KENT_RESTRAINED_JOINTS;
+    }
+    check_all(&b, 300);
+}
+
+/* A crest that suction pulls down and a sag that it lifts: both get both checks. */
+static void so_it_does_where_a_fitting_is_pushed_up_and_pulled_down(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {
+        {"test", KENT_CASE_TEST, 1.5, 0.6e6},
+        {"shut", KENT_CASE_OCCASIONAL, 1.5, -0.09e6}};
+    kent_build b = main_of_everything();
+    b.model->loads.test_pressure = 0.6e6;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, cases, 2);
+    const kent_holding *crest = &r->fittings[kent_build_fitting_of(&b, "B")];
+    const kent_holding *sag = &r->fittings[kent_build_fitting_of(&b, "F")];
+
+    assert_int_equal(crest->block.type, KENT_BLOCK_GRAVITY);
+    assert_int_equal(sag->block.type, KENT_BLOCK_BASE);
+    assert_int_equal(crest->by_sense[KENT_DOWNWARD], 1);
+    assert_int_equal(sag->by_sense[KENT_UPWARD], 1);
+    assert_true(check_lines("B", &crest->derivation, KENT_SI) > 20);
+    assert_true(check_lines("F", &sag->derivation, KENT_SI) > 20);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
+static void the_calculation_names_the_case_and_the_runner_up(void **state)
+{
+    (void)state;
+    kent_build b = main_of_everything();
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, CASES, 3);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "C")];
+    const kent_line *next = kent_derivation_find(&h->derivation, "F2");
+
+    assert_int_equal(h->governing, 2); /* 1.5 x 1.0 beats 1.2 x 1.2 */
+    assert_non_null(next);
+    assert_non_null(strstr(next->says, "'test'"));
+    assert_close(next->value, h->runner_up_load, 1e-15);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(every_printed_line_follows_from_the_digits_above_it),
+        cmocka_unit_test(so_it_does_in_ground_water_and_in_sleeves),
+        cmocka_unit_test(so_it_does_in_inches),
+        cmocka_unit_test(so_it_does_with_restrained_joints),
+        cmocka_unit_test(so_it_does_where_a_fitting_is_pushed_up_and_pulled_down),
+        cmocka_unit_test(the_calculation_names_the_case_and_the_runner_up),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
