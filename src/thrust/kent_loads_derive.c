@@ -310,6 +310,12 @@ static bool same(double a, double b)
     return fabs(a - b) <= 1e-9 * fmax(fabs(a), fabs(b));
 }
 
+/* Whether two ports face away from each other on one axis. */
+static bool in_line(const kent_port *a, const kent_port *b)
+{
+    return kent_vec3_length(kent_vec3_add(a->direction, b->direction)) < 1e-6;
+}
+
 static void check_bend(const sheet *s)
 {
     const kent_port_state *p = s->instant->balance.port;
@@ -334,7 +340,13 @@ static void check_bend(const sheet *s)
 
 static void check_branch(const sheet *s)
 {
-    if (s->count != 3) return;
+    const bool even = s->count == 3 && in_line(&s->ports[0], &s->ports[1]) &&
+                      same(s->ports[0].seal_diameter, s->ports[1].seal_diameter);
+
+    if (!even) {
+        sheet_heading(s, say("Check: no short form, the run turns or changes size"));
+        return;
+    }
     kent_derivation_work(s->d, "C", s->instant->balance.port[2].pressure_force,
                          KENT_FORCE, "p_3*A_3", "8.10",
                          s->moving
@@ -348,7 +360,10 @@ static void check_reducer(const sheet *s)
 {
     const kent_port_state *p = s->instant->balance.port;
 
-    if (s->count != 2) return;
+    if (s->count != 2 || !in_line(&s->ports[0], &s->ports[1])) {
+        sheet_heading(s, say("Check: no short form, the axis turns"));
+        return;
+    }
     if (s->moving) {
         kent_derivation_work(s->d, "C", fabs(p[0].push - p[1].push), KENT_FORCE,
                              "abs(F_1-F_2)", "8.11",
@@ -381,6 +396,8 @@ static void check_valve(const sheet *s)
         sheet_work(s, say("C"), p[s->load->pressed].pressure_force, KENT_FORCE,
                    say("p_%zu*A_%zu", n, n), "9.4",
                    "check: the resultant, away from the pressed side");
+    } else if (s->count == 2 && !in_line(&s->ports[0], &s->ports[1])) {
+        sheet_heading(s, say("Check: no short form, the axis turns"));
     } else if (s->count == 2) {
         kent_derivation_work(s->d, "C", fabs(p[0].push - p[1].push), KENT_FORCE,
                              "abs(F_1-F_2)", "8.11",
