@@ -15,8 +15,9 @@ int kent_grow(void **array, size_t *capacity, size_t need, size_t size)
     if (need <= *capacity) return 0;
 
     size_t room = *capacity > 0 ? *capacity : 8;
-    while (room < need)
+    while (room < need) {
         room = room > SIZE_MAX / 2 ? need : 2 * room;
+    }
 
     /* calloc and copy rather than realloc: new room is zeroed, and one function
      * stands for every allocation (a test refuses them one by one). */

@@ -26,8 +26,9 @@ void kent_complaints_sort(kent_complaints *c)
 
     for (size_t i = 0; i < kept; i++) {
         size_t first = 0;
-        while (strcmp(c->kept[first].file, c->kept[i].file) != 0)
+        while (strcmp(c->kept[first].file, c->kept[i].file) != 0) {
             first++;
+        }
         rank[i] = first;
     }
     /* Insertion sort: short, and equal lines keep their order. */

@@ -8,7 +8,6 @@
 #include <fcntl.h>
 #include <fts.h>
 #include <stdbool.h>
-#include <stdint.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/file.h>
@@ -62,11 +61,11 @@ static bool folder_holds(const char *path, const char *name)
     return holds;
 }
 
-/* Removes a folder with everything in it, the files named last and UNFINISHED at the
+/* Removes a folder with everything in it, the files `last` and UNFINISHED at the
  * very end: what an interruption leaves can still be known as ours. */
-static int remove_tree(const char *path, const char *last)
+static int remove_tree(char *path, const char *last)
 {
-    char *const roots[] = {(char *)(uintptr_t)path, NULL}; /* fts only reads it */
+    char *const roots[] = {path, NULL}; /* fts wants it writable, and leaves it */
     FTS *walk = fts_open(roots, FTS_PHYSICAL | FTS_NOCHDIR, NULL);
     if (!walk) return -1;
 
@@ -102,7 +101,7 @@ static bool is_beside(const char *name, const char *base, const char *tag)
 }
 
 /* One leftover of a run that died. */
-static void repair_one(const kent_folder *f, const char *leftover, bool is_old)
+static void repair_one(const kent_folder *f, char *leftover, bool is_old)
 {
     const bool marked = folder_holds(leftover, f->marker);
     if (is_old && marked && !is_folder(f->path)) {

@@ -45,8 +45,9 @@ done:
 
 void kent_notes_clear(kent_notes *n)
 {
-    for (size_t i = 0; i < n->count; i++)
+    for (size_t i = 0; i < n->count; i++) {
         free(n->text[i]);
+    }
     free(n->text);
     *n = (kent_notes){0};
 }

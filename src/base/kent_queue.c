@@ -40,7 +40,8 @@ void kent_queue_run(size_t count, unsigned threads, kent_queue_job *job, void *c
         }
     }
     (void)take_jobs(&w);
-    for (size_t i = 0; i < started; i++)
+    for (size_t i = 0; i < started; i++) {
         (void)pthread_join(helper[i], NULL);
+    }
     free(helper);
 }

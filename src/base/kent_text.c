@@ -102,8 +102,9 @@ size_t kent_text_distance(const char *a, const char *b)
 
     /* Levenshtein's recurrence, one row at a time: row[j] is the distance between
      * the first i letters of a and the first j of b. */
-    for (size_t j = 0; j <= b_count; j++)
+    for (size_t j = 0; j <= b_count; j++) {
         row[j] = j;
+    }
     for (size_t i = 1; i <= a_count; i++) {
         size_t diagonal = row[0];
         row[0] = i;

@@ -45,8 +45,9 @@ static law_value colebrook_white(double reynolds, double relative_roughness)
 static law_value colebrook_all(double reynolds, double relative_roughness)
 {
     if (reynolds <= LAMINAR_TO) return (law_value){64.0 / reynolds, -1.0};
-    if (reynolds >= TURBULENT_FROM)
+    if (reynolds >= TURBULENT_FROM) {
         return colebrook_white(reynolds, relative_roughness);
+    }
 
     const double low = 64.0 / LAMINAR_TO;
     const double high = colebrook_white(TURBULENT_FROM, relative_roughness).factor;

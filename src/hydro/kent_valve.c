@@ -69,8 +69,9 @@ double kent_valve_relative_capacity(const kent_valve_curve *curve, double openin
 
     if (!(opening > o[0])) return c[0];
     if (opening >= o[last]) return c[last];
-    while (o[i] < opening)
+    while (o[i] < opening) {
         i++;
+    }
     return c[i - 1] + (c[i] - c[i - 1]) * (opening - o[i - 1]) / (o[i] - o[i - 1]);
 }
 

@@ -49,8 +49,9 @@ static const term SQUEEZE_COLD[] = {
 static double series(const term *terms, size_t count, double x)
 {
     double sum = 0.0;
-    for (size_t i = 0; i < count; i++)
+    for (size_t i = 0; i < count; i++) {
         sum += terms[i].factor * pow(x, terms[i].power);
+    }
     return sum;
 }
 

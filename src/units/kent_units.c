@@ -238,8 +238,9 @@ void kent_units_free(kent_units *u)
         cv_free(u->known[i].to_si);
     }
     free(u->known);
-    for (int k = 0; k < KENT_KIND_COUNT; k++)
+    for (int k = 0; k < KENT_KIND_COUNT; k++) {
         ut_free(u->si[k]);
+    }
     if (u->system) ut_free_system(u->system);
     if (u->plain != (locale_t)0) freelocale(u->plain);
     free(u);
@@ -348,8 +349,9 @@ static kent_status complain_of_kind(const kent_units *u, const char *text,
     char such_as[128];
     int other = 0;
     examples(kind, such_as, sizeof such_as);
-    while (other < KENT_KIND_COUNT && !same_kind(unit, u->si[other]))
+    while (other < KENT_KIND_COUNT && !same_kind(unit, u->si[other])) {
         other++;
+    }
     if (other < KENT_KIND_COUNT) {
         return kent_error_set(err, KENT_E_INPUT, "",
                               "'%.80s' is %s where %s belongs; for instance %s", text,
@@ -456,8 +458,9 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
     kent_status status = KENT_OK;
 
     examples(kind, such_as, sizeof such_as);
-    while (isspace((unsigned char)*text))
+    while (isspace((unsigned char)*text)) {
         text++;
+    }
     own = kent_copy_text(text);
     if (!own) return kent_error_nomem(err);
     for (size_t n = strlen(own); n > 0 && isspace((unsigned char)own[n - 1]); n--) {
@@ -466,8 +469,9 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
     const size_t digits = number_length(own);
     const char *unit = own + digits;
     const bool has_comma = unit[0] == ',';
-    while (isspace((unsigned char)*unit))
+    while (isspace((unsigned char)*unit)) {
         unit++;
+    }
 
     if (digits == 0) {
         status =

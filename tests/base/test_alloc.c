@@ -10,8 +10,9 @@ static void memory_starts_as_zero(void **state)
     (void)state;
     unsigned char *bytes = kent_alloc(1000, 1);
     assert_non_null(bytes);
-    for (size_t i = 0; i < 1000; i++)
+    for (size_t i = 0; i < 1000; i++) {
         assert_int_equal(bytes[i], 0);
+    }
     free(bytes);
 }
 
@@ -36,8 +37,9 @@ static void growing_keeps_what_was_there_and_zeroes_the_rest(void **state)
     size_t capacity = 0;
     assert_int_equal(kent_grow(&array, &capacity, 3, sizeof(int)), 0);
     assert_true(capacity >= 3);
-    for (size_t i = 0; i < capacity; i++)
+    for (size_t i = 0; i < capacity; i++) {
         ((int *)array)[i] = (int)i + 1;
+    }
     const size_t before = capacity;
     assert_int_equal(kent_grow(&array, &capacity, 5 * before, sizeof(int)), 0);
     assert_true(capacity >= 5 * before);

@@ -7,8 +7,9 @@ static void all_are_counted_and_twenty_kept(void **state)
 {
     (void)state;
     kent_complaints c = {0};
-    for (int i = 0; i < 33; i++)
+    for (int i = 0; i < 33; i++) {
         kent_complain(&c, "a.cfg", i + 1, "complaint %d", i);
+    }
     assert_int_equal(c.count, 33);
     assert_string_equal(c.kept[KENT_COMPLAINTS_KEPT - 1].what, "complaint 19");
     kent_complaints_sort(&c);

@@ -58,7 +58,7 @@ static const char MARKER[] = "results.json";
 static int enter(void **state)
 {
     (void)state;
-    strcpy(place + strlen(place) - 6, "XXXXXX");
+    memcpy(place + strlen(place) - 6, "XXXXXX", 6);
     no_exchange = false;
     die_at_rename = fail_at_rename = renames = 0;
     return chdir("/tmp") != 0 || !mkdtemp(place) || chdir(place) != 0;
@@ -79,8 +79,9 @@ static int entries(const char *path)
     DIR *listing = opendir(path);
     int count = 0;
     if (!listing) return -1;
-    while (readdir(listing))
+    while (readdir(listing)) {
         count++;
+    }
     (void)closedir(listing);
     return count - 2;
 }
@@ -253,8 +254,9 @@ static void a_failed_write_is_reported_and_leaves_the_old_folder(void **state)
     const struct rlimit small = {.rlim_cur = 4096, .rlim_max = before.rlim_max};
     (void)signal(SIGXFSZ, SIG_IGN);
     assert_int_equal(setrlimit(RLIMIT_FSIZE, &small), 0);
-    for (int i = 0; i < 5000; i++)
+    for (int i = 0; i < 5000; i++) {
         (void)fputs("0.125,92.000\n", file);
+    }
     const kent_status closed = kent_folder_close(f, file, "history.csv", &err);
     assert_int_equal(setrlimit(RLIMIT_FSIZE, &before), 0);
 

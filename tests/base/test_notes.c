@@ -22,8 +22,9 @@ static int note_twenty_things(void *context)
 {
     kent_notes n = {0};
     (void)context;
-    for (int i = 0; i < 20; i++)
+    for (int i = 0; i < 20; i++) {
         kent_notes_add(&n, "thing %d", i);
+    }
     const bool failed = n.failed;
     if (!failed) assert_int_equal(n.count, 20);
     kent_notes_clear(&n);

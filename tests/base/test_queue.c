@@ -17,8 +17,9 @@ static void do_one(void *context, size_t index)
     tally *t = context;
     atomic_fetch_add(&t->times[index], 1);
     double sum = 0.0;
-    for (size_t i = 1; i <= index; i++)
+    for (size_t i = 1; i <= index; i++) {
         sum += 1.0 / (double)i;
+    }
     t->result[index] = sum;
 }
 
@@ -56,8 +57,9 @@ static void without_memory_for_threads_the_caller_does_it_all(void **state)
     kent_allocations_grant(0);
     kent_queue_run(JOBS, 4, do_one, &t);
     kent_allocations_grant(-1);
-    for (size_t i = 0; i < JOBS; i++)
+    for (size_t i = 0; i < JOBS; i++) {
         assert_int_equal(atomic_load(&t.times[i]), 1);
+    }
 }
 
 int main(void)

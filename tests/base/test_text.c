@@ -27,10 +27,11 @@ static void a_long_text_is_whole(void **state)
 {
     (void)state;
     kent_text t = {0};
-    for (int i = 0; i < 10000; i++)
+    for (int i = 0; i < 10000; i++) {
         kent_text_add(&t, "%04d", i);
+    }
     assert_int_equal(t.length, 40000);
-    assert_memory_equal(t.s + 4 * 9876, "9876", 4);
+    assert_memory_equal(t.s + 39504, "9876", 4);
     kent_text_clear(&t);
 }
 
@@ -38,8 +39,9 @@ static int write_two_lines(void *context)
 {
     kent_text t = {0};
     (void)context;
-    for (int i = 0; i < 100; i++)
+    for (int i = 0; i < 100; i++) {
         kent_text_add(&t, "line %d\n", i);
+    }
     const bool failed = t.failed;
     /* A text that failed once stays without what came later: no hole in it. */
     if (failed && t.s) assert_int_equal(strncmp(t.s, "line 0\n", 7), 0);

@@ -13,7 +13,8 @@ static void angles_are_right_where_arc_cosine_is_not(void **state)
 {
     (void)state;
     const double pi = acos(-1.0);
-    for (double angle = 1e-9; angle < 1.0; angle *= 10.0) {
+    for (int power = -9; power < 0; power++) {
+        const double angle = pow(10.0, power);
         const kent_vec3 a = {2.0, 0.0, 0.0};
         const kent_vec3 b = {3.0 * cos(angle), 3.0 * sin(angle), 0.0};
         assert_close(kent_vec3_angle(a, b), angle, 1e-12);

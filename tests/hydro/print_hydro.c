@@ -9,7 +9,8 @@
 
 int main(void)
 {
-    for (double t = KENT_WATER_COLDEST; t <= KENT_WATER_HOTTEST; t += 1.25) {
+    for (int i = 0; i <= 80; i++) {
+        const double t = KENT_WATER_COLDEST + 1.25 * i;
         const kent_water w = kent_water_at(t);
         printf("water %.17g %.17g %.17g %.17g %.17g\n", w.temperature, w.density,
                w.viscosity, w.vapour_pressure, w.sound_speed);

@@ -157,7 +157,8 @@ static void the_thick_form_goes_over_into_the_thin_one(void **state)
     (void)state;
     for (int i = 0; i < 3; i++) {
         double last = INFINITY;
-        for (double e = 0.1; e > 1e-6; e /= 10.0) {
+        for (int power = -1; power >= -6; power--) {
+            const double e = pow(10.0, power);
             const kent_wall wall = {
                 .bore = 1.0, .thickness = e, .modulus = 170e9, .poisson = 0.28};
             const double gap =

@@ -248,8 +248,9 @@ static void a_bare_number_is_only_a_ratio(void **state)
 {
     (void)state;
     for (int k = 0; k < KENT_KIND_COUNT; k++) {
-        if (k != KENT_RATIO)
+        if (k != KENT_RATIO) {
             assert_refused("1", (kent_kind)k, "'1' has no unit; write");
+        }
     }
 }
 
@@ -259,23 +260,9 @@ static void wrong_looking_texts_are_refused(void **state)
     assert_refused("1,4 m", KENT_LENGTH, "has a comma");
     assert_refused("1,400 m", KENT_LENGTH, "has a comma");
     assert_refused("1,5", KENT_RATIO, "has a comma");
-    const char *const no_number[] = {"",
-                                     " ",
-                                     "m",
-                                     "nan m",
-                                     "NAN",
-                                     "inf m",
-                                     "INF",
-                                     "- 5 m",
-                                     "--5 m",
-                                     "+-5 m",
-                                     ". m",
-                                     "e5 m",
-                                     "five m",
-                                     "\xE2\x88\x92"
-                                     "5 m",
-                                     "=5 m",
-                                     "/2 m"};
+    const char *const no_number[] = {
+        "",      " ",     "m",   "nan m", "NAN",    "inf m",           "INF",  "- 5 m",
+        "--5 m", "+-5 m", ". m", "e5 m",  "five m", "\342\210\2225 m", "=5 m", "/2 m"};
     for (size_t i = 0; i < COUNT(no_number); i++) {
         assert_refused(no_number[i], KENT_LENGTH, "does not start with a number");
     }
@@ -315,7 +302,8 @@ static void every_kind_reads_its_examples_and_shows_them_again(void **state)
             assert_true(shown.decimals >= 0 && shown.decimals <= 6);
             (void)read_si(kent_kind_example(kind, (kent_system)s), kind);
             /* What is shown, read again with its unit, is what it was. */
-            for (double si = -40.0; si <= 400.0; si += 55.0) {
+            for (int i = 0; i <= 8; i++) {
+                const double si = -40.0 + 55.0 * i;
                 char text[80];
                 (void)snprintf(text, sizeof text, "%.17g %s",
                                kent_units_shown(kind, (kent_system)s, si), shown.unit);
@@ -331,8 +319,9 @@ static void a_comma_locale_changes_nothing(void **state)
     const char *const names[] = {"de_DE.UTF-8", "fr_FR.UTF-8", "de_DE.utf8",
                                  "nl_NL.UTF-8"};
     const char *set = NULL;
-    for (size_t i = 0; i < COUNT(names) && !set; i++)
+    for (size_t i = 0; i < COUNT(names) && !set; i++) {
         set = setlocale(LC_ALL, names[i]);
+    }
     if (!set) skip(); /* no such locale on this machine */
     kent_error err = {0};
     kent_units *fresh = NULL;
