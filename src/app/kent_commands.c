@@ -1,0 +1,349 @@
+#include "kent_commands.h"
+
+#include "kent_case.h"
+#include "kent_output.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+/* Everything one command holds on to. */
+typedef struct session {
+    const kent_options *options;
+    kent_catalogue *catalogue;
+    kent_model *model;
+    int *scenarios; /* [options->scenario_count] */
+    size_t scenario_count;
+    kent_results *results;
+    kent_error error;
+    kent_complaints complaints;
+} session;
+
+static void session_close(session *s)
+{
+    kent_results_free(s->results);
+    free(s->scenarios);
+    kent_model_free(s->model);
+    kent_catalogue_free(s->catalogue);
+}
+
+/* ---- standard error ---------------------------------------------------------------
+ */
+
+static kent_exit exit_of(kent_status status)
+{
+    switch (status) {
+    case KENT_OK:
+        return KENT_EXIT_DONE;
+    case KENT_E_INPUT:
+        return KENT_EXIT_INPUT;
+    case KENT_E_NOMEM:
+    case KENT_E_SOLVE:
+    case KENT_E_IO:
+        break;
+    }
+    return KENT_EXIT_FAILED;
+}
+
+static void say_error(const kent_error *err, kent_status status)
+{
+    const char *where = err->where[0] != '\0' ? err->where : "kentledge";
+    const char *what = err->what[0] != '\0' ? err->what : kent_status_text(status);
+    (void)fprintf(stderr, "%s: %s\n", where, what);
+}
+
+static void say_complaints(kent_complaints *c)
+{
+    const size_t kept =
+        c->count < KENT_COMPLAINTS_KEPT ? c->count : (size_t)KENT_COMPLAINTS_KEPT;
+    kent_complaints_sort(c);
+    for (size_t i = 0; i < kept; i++) {
+        const kent_complaint *k = &c->kept[i];
+        if (k->line > 0) {
+            (void)fprintf(stderr, "%s:%d: %s\n", k->file, k->line, k->what);
+        } else {
+            (void)fprintf(stderr, "%s: %s\n", k->file, k->what);
+        }
+    }
+    (void)fprintf(stderr, "%zu error%s", c->count, c->count == 1 ? "" : "s");
+    if (c->count > kept) (void)fprintf(stderr, ", the first %zu shown", kept);
+    (void)fprintf(stderr, "; nothing was run\n");
+}
+
+/* Says what went wrong, once; returns the exit status. */
+static kent_exit fail(session *s, kent_status status)
+{
+    if (s->complaints.count > 0) {
+        say_complaints(&s->complaints);
+        return KENT_EXIT_INPUT;
+    }
+    say_error(&s->error, status);
+    return exit_of(status);
+}
+
+/* "did you mean 'shut-12s'?" or the names there are. */
+static void say_unknown(const char *kind, const char *given, const char *const *names,
+                        size_t count)
+{
+    enum { NAMED = 12 };
+    const char *near = kent_options_nearest(given, names, count);
+    (void)fprintf(stderr, "kentledge: the case has no %s '%s'", kind, given);
+    if (near) {
+        (void)fprintf(stderr, "; did you mean '%s'?\n", near);
+        return;
+    }
+    for (size_t i = 0; i < count && i < NAMED; i++) {
+        (void)fprintf(stderr, "%s%s", i > 0 ? ", " : "; it has ", names[i]);
+    }
+    (void)fprintf(stderr, "%s\n", count > NAMED ? " and others" : "");
+}
+
+/* ---- reading ----------------------------------------------------------------------
+ */
+
+static kent_exit read_catalogue(session *s)
+{
+    const kent_status status =
+        kent_catalogue_read(NULL, &s->catalogue, &s->complaints, &s->error);
+    if (!status) return KENT_EXIT_DONE;
+    const kent_exit failed = fail(s, status);
+    return status == KENT_E_IO ? KENT_EXIT_INPUT : failed; /* it is not where told */
+}
+
+static kent_exit read_case(session *s)
+{
+    const kent_exit failed = read_catalogue(s);
+    if (failed) return failed;
+    const kent_status status = kent_case_read(s->options->subject, s->catalogue,
+                                              &s->model, &s->complaints, &s->error);
+    if (!status) return KENT_EXIT_DONE;
+    const kent_exit code = fail(s, status);
+    return status == KENT_E_IO ? KENT_EXIT_INPUT : code; /* no such file: bad usage */
+}
+
+static int find_name(const char *name, const char *const *names, size_t count)
+{
+    for (size_t i = 0; i < count; i++) {
+        if (strcmp(name, names[i]) == 0) return (int)i;
+    }
+    return -1;
+}
+
+static bool chosen_already(const session *s, int scenario)
+{
+    for (size_t i = 0; i < s->scenario_count; i++) {
+        if (s->scenarios[i] == scenario) return true;
+    }
+    return false;
+}
+
+/* The scenarios asked for, each once, as indices. */
+static kent_exit choose_scenarios(session *s)
+{
+    const kent_options *o = s->options;
+    const size_t count = s->model->scenario_count;
+    kent_exit code = KENT_EXIT_DONE;
+    const char **names = kent_alloc(count, sizeof *names);
+    s->scenarios = kent_alloc(o->scenario_count, sizeof *s->scenarios);
+    if (!names || !s->scenarios) {
+        code = fail(s, kent_error_nomem(&s->error));
+        goto done;
+    }
+    for (size_t i = 0; i < count; i++)
+        names[i] = s->model->scenarios[i].id;
+    for (size_t i = 0; i < o->scenario_count; i++) {
+        const int found = find_name(o->scenarios[i], names, count);
+        if (found < 0) {
+            say_unknown("scenario", o->scenarios[i], names, count);
+            code = KENT_EXIT_INPUT;
+        } else if (!chosen_already(s, found)) {
+            s->scenarios[s->scenario_count++] = found;
+        }
+    }
+done:
+    free(names);
+    return code;
+}
+
+static kent_exit find_fitting(const session *s, int *fitting)
+{
+    const kent_model *m = s->model;
+    const char **names = kent_alloc(m->fitting_count, sizeof *names);
+    if (!names) {
+        say_error(&s->error, KENT_E_NOMEM);
+        return KENT_EXIT_FAILED;
+    }
+    for (size_t i = 0; i < m->fitting_count; i++)
+        names[i] = m->fittings[i].id;
+    *fitting = find_name(s->options->fitting, names, m->fitting_count);
+    if (*fitting < 0) {
+        say_unknown("fitting", s->options->fitting, names, m->fitting_count);
+    }
+    free(names);
+    return *fitting < 0 ? KENT_EXIT_INPUT : KENT_EXIT_DONE;
+}
+
+static kent_report_options report_options(const session *s)
+{
+    const kent_options *o = s->options;
+    kent_system units = KENT_SI;
+    if (s->model) units = s->model->units;
+    if (o->units_given) units = o->units;
+    return (kent_report_options){.units = units, .wide = o->wide};
+}
+
+static kent_exit do_job(session *s)
+{
+    const kent_job_options job = {
+        .scenarios = s->options->scenario_count > 0 ? s->scenarios : NULL,
+        .scenario_count = s->scenario_count,
+        .threads = s->options->threads,
+    };
+    const kent_status status = kent_job_run(s->model, &job, &s->results, &s->error);
+    return status ? fail(s, status) : KENT_EXIT_DONE;
+}
+
+/* ---- writing ----------------------------------------------------------------------
+ */
+
+static kent_status print_results(const session *s, kent_text *text)
+{
+    const kent_report_options o = report_options(s);
+    const kent_sink sink = kent_output_gather(text);
+    switch (s->options->format) {
+    case KENT_TABLE_FORMAT:
+        break;
+    case KENT_CSV_FORMAT:
+        return kent_report_summary_csv(s->results, &o, sink);
+    case KENT_JSON_FORMAT:
+        return kent_report_json(s->results, sink);
+    }
+    return kent_report_tables(s->results, &o, sink);
+}
+
+/* The folder is filled beside its place, then the tables are printed, then the folder
+ * is put in place: where printing fails, the old results still stand. */
+static kent_exit write_results(session *s)
+{
+    const kent_report_options o = report_options(s);
+    char *name = s->options->out ? kent_copy_text(s->options->out)
+                                 : kent_output_folder_name(s->options->subject);
+    kent_folder *folder = NULL;
+    kent_text text = {0};
+    kent_status status = name ? KENT_OK : kent_error_nomem(&s->error);
+    if (!status && !s->options->no_files) {
+        status = kent_folder_open(name, KENT_OUTPUT_MARKER, &folder, &s->error);
+        if (!status) status = kent_output_fill(s->results, &o, folder, &s->error);
+    }
+    if (!status) status = print_results(s, &text);
+    if (!status) status = kent_output_print(&text, &s->error);
+    if (!status && folder) status = kent_folder_commit(folder, &s->error);
+    if (status) {
+        say_error(&s->error, status);
+    } else if (folder && !s->options->quiet) {
+        (void)fprintf(stderr, "results in %s\n", name);
+    }
+    kent_text_clear(&text);
+    kent_folder_free(folder);
+    free(name);
+    return status ? KENT_EXIT_FAILED : KENT_EXIT_DONE;
+}
+
+/* ---- the commands -----------------------------------------------------------------
+ */
+
+static kent_exit command_run(session *s)
+{
+    kent_exit code = read_case(s);
+    if (!code) code = choose_scenarios(s);
+    if (!code) code = do_job(s);
+    if (!code) code = write_results(s);
+    if (code || !s->options->strict || !s->results->limit_exceeded) return code;
+    (void)fprintf(stderr, "kentledge: --strict: a limit is exceeded (rating, vapour "
+                          "limit, or a fitting that nothing holds)\n");
+    return KENT_EXIT_LIMIT;
+}
+
+/* Prints what one report wrote. */
+static kent_exit print_report(session *s, kent_status status, const kent_text *text)
+{
+    if (!status) status = kent_output_print(text, &s->error);
+    return status ? fail(s, status) : KENT_EXIT_DONE;
+}
+
+/* What was understood is printed even where no steady state is found. */
+static kent_exit command_check(session *s)
+{
+    kent_steady *steady = NULL;
+    kent_text text = {0};
+    kent_status solved = KENT_OK;
+    kent_exit code = read_case(s);
+    if (code) return code;
+    const kent_report_options o = report_options(s);
+    if (s->model->span_count > 0) {
+        solved = kent_steady_solve(s->model, &steady, &s->error);
+    }
+    const kent_status status =
+        kent_report_check(s->model, steady, &o, kent_output_gather(&text));
+    if (solved) {
+        (void)kent_output_print(&text, &s->error); /* the first cause stays */
+        code = fail(s, solved);
+    } else {
+        code = print_report(s, status, &text);
+    }
+    kent_text_clear(&text);
+    kent_steady_free(steady);
+    return code;
+}
+
+static kent_exit command_explain(session *s)
+{
+    int fitting = -1;
+    kent_text text = {0};
+    kent_exit code = read_case(s);
+    if (!code) code = find_fitting(s, &fitting);
+    if (!code) code = choose_scenarios(s);
+    if (!code) code = do_job(s);
+    if (code) return code;
+    const kent_report_options o = report_options(s);
+    const kent_status status =
+        kent_report_explain(s->results, fitting, &o, kent_output_gather(&text));
+    code = print_report(s, status, &text);
+    kent_text_clear(&text);
+    return code;
+}
+
+static kent_exit command_catalogue(session *s)
+{
+    kent_text text = {0};
+    kent_exit code = read_catalogue(s);
+    if (code) return code;
+    const kent_report_options o = report_options(s);
+    const kent_status status = kent_report_catalogue(s->catalogue, s->options->subject,
+                                                     &o, kent_output_gather(&text));
+    code = print_report(s, status, &text);
+    kent_text_clear(&text);
+    return code;
+}
+
+kent_exit kent_commands_do(const kent_options *o)
+{
+    session s = {.options = o};
+    kent_exit code = KENT_EXIT_FAILED;
+    switch (o->command) {
+    case KENT_RUN:
+        code = command_run(&s);
+        break;
+    case KENT_CHECK:
+        code = command_check(&s);
+        break;
+    case KENT_EXPLAIN:
+        code = command_explain(&s);
+        break;
+    case KENT_CATALOGUE_LIST:
+        code = command_catalogue(&s);
+        break;
+    }
+    session_close(&s);
+    return code;
+}

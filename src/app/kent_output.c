@@ -1,0 +1,138 @@
+#include "kent_output.h"
+
+#include <ctype.h>
+#include <errno.h>
+#include <stdio_ext.h>
+#include <stdlib.h>
+#include <string.h>
+
+const char KENT_OUTPUT_MARKER[] = "results.json";
+
+/* ---- standard output --------------------------------------------------------------
+ */
+
+static int gather(void *to, const char *piece, size_t length)
+{
+    kent_text *text = to;
+    kent_text_add(text, "%.*s", (int)length, piece);
+    return text->failed ? -1 : 0;
+}
+
+kent_sink kent_output_gather(kent_text *text)
+{
+    return (kent_sink){.write = gather, .to = text};
+}
+
+kent_status kent_output_print(const kent_text *text, kent_error *err)
+{
+    if (text->failed) return kent_error_nomem(err);
+    errno = 0;
+    const size_t written = fwrite(kent_text_of(text), 1, text->length, stdout);
+    if (written == text->length && fflush(stdout) == 0) return KENT_OK;
+    const int cause = errno;
+    __fpurge(stdout); /* said once: closing it must not fail a second time */
+    return kent_error_set(err, KENT_E_IO, "standard output", "%s",
+                          cause != 0 ? strerror(cause) : "write error");
+}
+
+/* ---- the folder -------------------------------------------------------------------
+ */
+
+char *kent_output_folder_name(const char *case_path)
+{
+    const char *slash = strrchr(case_path, '/');
+    const char *name = slash ? slash + 1 : case_path;
+    size_t length = strlen(name);
+    kent_text out = {0};
+    if (strcmp(case_path, "-") == 0) return kent_copy_text("standard-input-results");
+    if (length > 4 && strcmp(name + length - 4, ".cfg") == 0) length -= 4;
+    kent_text_add(&out, "%.*s-results", (int)length, name);
+    if (out.failed) kent_text_clear(&out);
+    return out.s;
+}
+
+/* A scenario's id in a file name: what a file system may object to becomes '_', and
+ * then its number keeps two such names apart. */
+static void add_file_name(kent_text *name, const char *what, const char *id,
+                          size_t index)
+{
+    bool changed = false;
+    kent_text_add(name, "%s-", what);
+    for (const char *s = id; *s != '\0'; s++) {
+        const unsigned char c = (unsigned char)*s;
+        const bool plain = isalnum(c) || c >= 0x80 || strchr("-_.+", c);
+        kent_text_add(name, "%c", plain ? *s : '_');
+        changed = changed || !plain;
+    }
+    if (changed) kent_text_add(name, "-%zu", index + 1);
+    kent_text_add(name, ".csv");
+}
+
+/* One file of the folder. */
+typedef struct output_file {
+    const kent_results *results;
+    const kent_report_options *options;
+    size_t scenario; /* index into results' scenarios */
+    kent_status (*write)(const struct output_file *f, kent_sink sink);
+} output_file;
+
+static kent_status write_summary(const output_file *f, kent_sink sink)
+{
+    return kent_report_summary_csv(f->results, f->options, sink);
+}
+
+static kent_status write_json(const output_file *f, kent_sink sink)
+{
+    return kent_report_json(f->results, sink);
+}
+
+static kent_status write_history(const output_file *f, kent_sink sink)
+{
+    return kent_report_history_csv(f->results, f->scenario, sink);
+}
+
+static kent_status write_profile(const output_file *f, kent_sink sink)
+{
+    return kent_report_profile_csv(f->results, f->scenario, sink);
+}
+
+static kent_status write_file(const output_file *f, const char *name,
+                              kent_folder *folder, kent_error *err)
+{
+    FILE *stream = kent_folder_create(folder, name, err);
+    if (!stream) return err->status ? err->status : KENT_E_IO;
+    const kent_status written = f->write(f, kent_sink_stream(stream));
+    const kent_status closed = kent_folder_close(folder, stream, name, err);
+    if (written == KENT_E_NOMEM) return kent_error_nomem(err);
+    if (written && !closed) {
+        return kent_error_set(err, written, name, "%s", kent_status_text(written));
+    }
+    return closed;
+}
+
+kent_status kent_output_fill(const kent_results *r, const kent_report_options *o,
+                             kent_folder *folder, kent_error *err)
+{
+    static const struct {
+        const char *word;
+        kent_status (*write)(const output_file *f, kent_sink sink);
+    } EACH[] = {{"history", write_history}, {"profile", write_profile}};
+    output_file f = {.results = r, .options = o, .write = write_summary};
+    kent_text name = {0};
+    kent_status status = write_file(&f, "summary.csv", folder, err);
+    f.write = write_json;
+    if (!status) status = write_file(&f, KENT_OUTPUT_MARKER, folder, err);
+    for (size_t i = 0; !status && i < r->scenario_count; i++) {
+        const char *id = r->model->scenarios[r->scenarios[i].scenario].id;
+        f.scenario = i;
+        for (size_t k = 0; !status && k < sizeof EACH / sizeof EACH[0]; k++) {
+            kent_text_reset(&name);
+            add_file_name(&name, EACH[k].word, id, i);
+            f.write = EACH[k].write;
+            status = name.failed ? kent_error_nomem(err)
+                                 : write_file(&f, kent_text_of(&name), folder, err);
+        }
+    }
+    kent_text_clear(&name);
+    return status;
+}

@@ -1,0 +1,259 @@
+#include "kent_shown.h"
+#include "kent_sink.h"
+#include "kent_table.h"
+
+#include <string.h>
+
+/* What the parts of one listing share. */
+typedef struct kent_listing {
+    const kent_catalogue *catalogue;
+    kent_system units;
+    size_t limit;        /* columns of a line; 0: none */
+    kent_notes *sources; /* of the part being listed, in order of first mention */
+    kent_text *out;
+} kent_listing;
+
+static void quantity(const kent_listing *l, kent_table *t, kent_kind kind, double si)
+{
+    kent_table_cell(t, "%s", kent_shown_quantity(kind, l->units, si).text);
+}
+
+static void number(kent_table *t, double value, int decimals)
+{
+    kent_table_cell(t, "%s", kent_shown_number(value, decimals).text);
+}
+
+/* Millimetres and inches of a wall need more decimals than those of a bore. */
+static void wall(const kent_listing *l, kent_table *t, double si)
+{
+    number(t, kent_units_shown(KENT_DIAMETER, l->units, si),
+           l->units == KENT_SI ? 1 : 3);
+}
+
+/* The source's number; sources are too long for a column and stand under the table. */
+static void source(const kent_listing *l, kent_table *t, const char *text)
+{
+    kent_notes_add(l->sources, "%s", text);
+    for (size_t i = 0; i < l->sources->count; i++) {
+        if (strcmp(l->sources->text[i], text) != 0) continue;
+        kent_table_cell(t, "[%zu]", i + 1);
+        return;
+    }
+    l->out->failed = true; /* the note was lost for want of memory */
+}
+
+static void origin(const kent_listing *l, kent_table *t, const kent_provenance *from)
+{
+    kent_table_cell(t, "%s", from->status);
+    source(l, t, from->source);
+}
+
+static void print_sources(const kent_listing *l)
+{
+    for (size_t i = 0; i < l->sources->count; i++) {
+        char lead[32];
+        (void)snprintf(lead, sizeof lead, "[%zu] ", i + 1);
+        kent_table_paragraph(l->out, l->limit, lead, l->sources->text[i]);
+    }
+    kent_notes_clear(l->sources);
+}
+
+static void finish(const kent_listing *l, const char *heading, kent_table *t)
+{
+    kent_text_add(l->out, "%s%s\n", l->out->length > 0 ? "\n" : "", heading);
+    (void)kent_table_print(t, l->limit, l->out);
+    kent_table_clear(t);
+    print_sources(l);
+}
+
+static void list_pipes(const kent_listing *l)
+{
+    const kent_shown mm = kent_shown_unit(KENT_DIAMETER, l->units);
+    const kent_shown bar = kent_shown_unit(KENT_PRESSURE, l->units);
+    const kent_column columns[] = {
+        {"pipe_class", "", KENT_ALIGN_LEFT, false},
+        {"material", "", KENT_ALIGN_LEFT, true},
+        {"outside", mm.text, KENT_ALIGN_RIGHT, false},
+        {"wall", mm.text, KENT_ALIGN_RIGHT, false},
+        {"least", mm.text, KENT_ALIGN_RIGHT, false},
+        {"lining", mm.text, KENT_ALIGN_RIGHT, false},
+        {"rating", bar.text, KENT_ALIGN_RIGHT, false},
+        {"status", "", KENT_ALIGN_LEFT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < l->catalogue->pipe_count; i++) {
+        const kent_pipe_class *p = &l->catalogue->pipes[i];
+        kent_table_cell(&t, "%s", p->id);
+        kent_table_cell(&t, "%s", p->material);
+        wall(l, &t, p->outside_diameter);
+        wall(l, &t, p->wall);
+        wall(l, &t, p->wall_minimum);
+        wall(l, &t, p->lining);
+        quantity(l, &t, KENT_PRESSURE, p->pressure_rating);
+        origin(l, &t, &p->from);
+    }
+    finish(l, "Pipes", &t);
+}
+
+static void list_materials(const kent_listing *l)
+{
+    const kent_shown gpa = kent_shown_unit(KENT_MODULUS, l->units);
+    const kent_shown mm = kent_shown_unit(KENT_DIAMETER, l->units);
+    const kent_shown density = kent_shown_unit(KENT_DENSITY, l->units);
+    const kent_column columns[] = {
+        {"material", "", KENT_ALIGN_LEFT, false},
+        {"modulus", gpa.text, KENT_ALIGN_RIGHT, false},
+        {"Poisson", "", KENT_ALIGN_RIGHT, false},
+        {"density", density.text, KENT_ALIGN_RIGHT, false},
+        {"roughness", mm.text, KENT_ALIGN_RIGHT, false},
+        {"lining", gpa.text, KENT_ALIGN_RIGHT, false},
+        {"status", "", KENT_ALIGN_LEFT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < l->catalogue->material_count; i++) {
+        const kent_material *m = &l->catalogue->materials[i];
+        kent_table_cell(&t, "%s", m->id);
+        quantity(l, &t, KENT_MODULUS, m->modulus);
+        number(&t, m->poisson, 2);
+        quantity(l, &t, KENT_DENSITY, m->density);
+        number(&t, kent_units_shown(KENT_DIAMETER, l->units, m->roughness), 4);
+        quantity(l, &t, KENT_MODULUS,
+                 m->lining_modulus > 0.0 ? m->lining_modulus : NAN);
+        origin(l, &t, &m->from);
+    }
+    finish(l, "Materials", &t);
+}
+
+static void list_valves(const kent_listing *l)
+{
+    static const double OPENINGS[] = {0.1, 0.25, 0.5, 0.75};
+    const kent_column columns[] = {
+        {"valve type", "", KENT_ALIGN_LEFT, false},
+        {"K open", "", KENT_ALIGN_RIGHT, false},
+        {"E at 0.10", "relative", KENT_ALIGN_RIGHT, false},
+        {"at 0.25", "", KENT_ALIGN_RIGHT, false},
+        {"at 0.50", "", KENT_ALIGN_RIGHT, false},
+        {"at 0.75", "", KENT_ALIGN_RIGHT, false},
+        {"assumed", "below", KENT_ALIGN_RIGHT, false},
+        {"status", "", KENT_ALIGN_LEFT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < l->catalogue->valve_count; i++) {
+        const kent_valve_type *v = &l->catalogue->valves[i];
+        kent_table_cell(&t, "%s", v->id);
+        number(&t, v->loss, 2);
+        for (size_t k = 0; k < sizeof OPENINGS / sizeof OPENINGS[0]; k++) {
+            number(&t, kent_valve_relative_capacity(&v->curve, OPENINGS[k]), 3);
+        }
+        number(&t, v->curve.lowest_given, 2);
+        origin(l, &t, &v->from);
+    }
+    finish(l, "Valves: capacity E against opening, relative to full opening", &t);
+}
+
+static void list_soils(const kent_listing *l)
+{
+    const kent_shown kpa = kent_shown_unit(KENT_STRESS, l->units);
+    const kent_shown weight = kent_shown_unit(KENT_UNIT_WEIGHT, l->units);
+    const kent_column columns[] = {
+        {"soil", "", KENT_ALIGN_LEFT, false},
+        {"bearing", kpa.text, KENT_ALIGN_RIGHT, false},
+        {"factor", "inside", KENT_ALIGN_RIGHT, false},
+        {"base", kpa.text, KENT_ALIGN_RIGHT, false},
+        {"weight", weight.text, KENT_ALIGN_RIGHT, false},
+        {"angle", "°", KENT_ALIGN_RIGHT, false},
+        {"cohesion", kpa.text, KENT_ALIGN_RIGHT, false},
+        {"relied on", "", KENT_ALIGN_LEFT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < l->catalogue->soil_count; i++) {
+        const kent_soil *s = &l->catalogue->soils[i];
+        kent_table_cell(&t, "%s", s->id);
+        quantity(l, &t, KENT_STRESS, s->allowable_bearing);
+        number(&t, s->factor_inside, 2);
+        quantity(l, &t, KENT_STRESS, s->vertical_bearing);
+        quantity(l, &t, KENT_UNIT_WEIGHT, s->unit_weight);
+        quantity(l, &t, KENT_ANGLE, s->friction_angle);
+        quantity(l, &t, KENT_STRESS, s->cohesion);
+        kent_table_cell(&t, "%s", s->unreliable ? "no" : "yes");
+        source(l, &t, s->source);
+    }
+    finish(l, "Soils", &t);
+}
+
+/* Sets of rules have too many values for a row: one paragraph each. */
+static void list_rules(const kent_listing *l)
+{
+    kent_text_add(l->out, "%sDesign rules\n", l->out->length > 0 ? "\n" : "");
+    for (size_t i = 0; i < l->catalogue->rule_count; i++) {
+        const kent_rules *r = &l->catalogue->rules[i];
+        kent_text words = {0};
+        kent_text_add(&words, "%s: safety factor %.2f; ", r->id, r->safety_factor);
+        kent_text_add(&words, "height at most %.2f of the depth of its base; ",
+                      r->height_to_depth);
+        kent_text_add(&words, "width %.2f to %.2f heights; ", r->width_to_height[0],
+                      r->width_to_height[1]);
+        kent_text_add(
+            &words, "thickness from %s; ",
+            kent_shown_with_unit(KENT_LENGTH, l->units, r->least_thickness).text);
+        kent_text_add(
+            &words, "height from %s; ",
+            kent_shown_with_unit(KENT_LENGTH, l->units, r->least_height).text);
+        kent_text_add(&words, "sides in steps of %s; ",
+                      kent_shown_with_unit(KENT_LENGTH, l->units, r->side_step).text);
+        kent_text_add(&words, "no block under less cover than %s; ",
+                      kent_shown_with_unit(KENT_LENGTH, l->units, r->least_cover).text);
+        kent_text_add(
+            &words, "concrete %s; ",
+            kent_shown_with_unit(KENT_UNIT_WEIGHT, l->units, r->concrete_unit_weight)
+                .text);
+        kent_text_add(
+            &words, "ground water %s; ",
+            kent_shown_with_unit(KENT_UNIT_WEIGHT, l->units, r->water_unit_weight)
+                .text);
+        kent_text_add(&words, "friction of a sleeved pipe %.2f of a bare one's; ",
+                      r->wrapped_ratio);
+        kent_text_add(
+            &words, "one block at most %s. Source: %s",
+            kent_shown_with_unit(KENT_VOLUME, l->units, r->largest_volume).text,
+            r->source);
+        kent_table_paragraph(l->out, l->limit, "", kent_text_of(&words));
+        l->out->failed = l->out->failed || words.failed;
+        kent_text_clear(&words);
+    }
+}
+
+kent_status kent_report_catalogue(const kent_catalogue *c, const char *what,
+                                  const kent_report_options *o, kent_sink sink)
+{
+    static const struct {
+        const char *word;
+        void (*list)(const kent_listing *l);
+    } PARTS[] = {{"pipes", list_pipes},
+                 {"materials", list_materials},
+                 {"valves", list_valves},
+                 {"soils", list_soils},
+                 {"rules", list_rules}};
+    kent_text out = {0};
+    kent_notes sources = {0};
+    const kent_listing l = {.catalogue = c,
+                            .units = o->units,
+                            .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
+                            .sources = &sources,
+                            .out = &out};
+    for (size_t i = 0; i < sizeof PARTS / sizeof PARTS[0]; i++) {
+        if (!what || strcmp(what, PARTS[i].word) == 0) PARTS[i].list(&l);
+    }
+    const kent_status status = kent_sink_flush(sink, &out);
+    kent_notes_clear(&sources);
+    kent_text_clear(&out);
+    return status;
+}

@@ -1,0 +1,99 @@
+#include "kent_pressures.h"
+#include "kent_sink.h"
+#include "kent_summary.h"
+
+#include <math.h>
+
+/* A number to ten digits; an empty field where there is none. */
+static void add_number(kent_text *out, double value)
+{
+    if (isfinite(value)) kent_text_add(out, "%.10g", value);
+}
+
+static void add_history_heading(const kent_results *r, kent_text *out)
+{
+    static const char *const COLUMNS[] = {"head_m", "pressure_Pa", "flow_m3s"};
+    kent_text head = {0};
+    kent_text_add(out, "time_s");
+    for (size_t w = 0; w < r->history_count; w++) {
+        const kent_point *p = &r->model->points[r->history_points[w]];
+        for (size_t c = 0; c < 3; c++) {
+            kent_text_reset(&head);
+            kent_text_add(&head, "%s.%s", p->id, COLUMNS[c]);
+            kent_text_add(out, ",");
+            kent_summary_field(out, kent_text_of(&head));
+        }
+    }
+    kent_text_add(out, "\n");
+    out->failed = out->failed || head.failed;
+    kent_text_clear(&head);
+}
+
+kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
+                                    kent_sink sink)
+{
+    const kent_model *m = r->model;
+    const kent_history *h = &r->scenarios[scenario].history;
+    kent_text out = {0};
+    kent_status status = KENT_OK;
+    add_history_heading(r, &out);
+    for (size_t row = 0; !status && row < h->rows; row++) {
+        add_number(&out, h->time[row]);
+        for (size_t w = 0; w < r->history_count; w++) {
+            const double z = m->points[r->history_points[w]].at.z;
+            const double head = h->head[row * h->watch_count + w];
+            kent_text_add(&out, ",");
+            add_number(&out, head);
+            kent_text_add(&out, ",");
+            add_number(&out, kent_model_pressure(m, head, z));
+            kent_text_add(&out, ",");
+            add_number(&out, h->flow[row * h->watch_count + w]);
+        }
+        kent_text_add(&out, "\n");
+        status = kent_sink_flush(sink, &out);
+    }
+    if (!status) status = kent_sink_flush(sink, &out);
+    kent_text_clear(&out);
+    return status;
+}
+
+static void add_profile_rows(const kent_results *r, size_t scenario, size_t index,
+                             kent_text *out)
+{
+    const kent_model *m = r->model;
+    const kent_scenario_result *s = &r->scenarios[scenario];
+    const kent_span *span = &m->spans[index];
+    const int reaches = s->grid->reaches[index];
+    for (int k = 0; k <= reaches; k++) {
+        const double x = span->length * k / reaches;
+        const double numbers[] = {
+            m->chainage[span->route_first] + x,
+            kent_span_level(m, span, x),
+            kent_steady_head(m, r->steady, (int)index, x),
+            s->highest[index][k],
+            s->lowest[index][k],
+        };
+        kent_summary_field(out, span->id);
+        for (size_t c = 0; c < sizeof numbers / sizeof numbers[0]; c++) {
+            kent_text_add(out, ",");
+            add_number(out, numbers[c]);
+        }
+        kent_text_add(out, "\n");
+    }
+}
+
+kent_status kent_report_profile_csv(const kent_results *r, size_t scenario,
+                                    kent_sink sink)
+{
+    kent_text out = {0};
+    kent_status status = KENT_OK;
+    kent_text_add(&out, "pipe,chainage_m,z_m,steady_head_m,highest_head_m,"
+                        "lowest_head_m\n");
+    for (size_t i = 0; !status && i < r->model->span_count; i++) {
+        add_profile_rows(r, scenario, i, &out);
+        status = kent_sink_flush(sink, &out);
+    }
+    if (!status) status = kent_sink_flush(sink, &out);
+    kent_text_clear(&out);
+    return status;
+}

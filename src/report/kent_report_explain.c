@@ -1,0 +1,361 @@
+#include "kent_pressures.h"
+#include "kent_shown.h"
+#include "kent_sink.h"
+#include "kent_steps.h"
+#include "kent_table.h"
+
+#include <math.h>
+#include <stdarg.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+/* What the parts of one hand calculation share. */
+typedef struct kent_sheet {
+    const kent_results *results;
+    const kent_model *model;
+    const kent_fitting *fitting;
+    const kent_fitting_loads *loads;
+    const kent_holding *holding;
+    kent_system units;
+    size_t limit; /* columns of a line; 0: none */
+    kent_text *out;
+} kent_sheet;
+
+static void print_title(const kent_sheet *s)
+{
+    const kent_fitting *f = s->fitting;
+    kent_text words = {0};
+    kent_text_add(&words, "%s: %s, size %s %s", f->id,
+                  kent_shown_fitting(s->model, f, s->units, KENT_ROOMY).text,
+                  kent_shown_size(s->model, f, s->units).text,
+                  kent_shown_unit(KENT_DIAMETER, s->units).text);
+    if (isfinite(f->station)) {
+        kent_text_add(&words, ", station %s",
+                      kent_shown_station(s->units, f->station).text);
+    }
+    kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
+    if (s->model->title[0] != '\0') {
+        kent_table_paragraph(s->out, s->limit, "", s->model->title);
+    }
+    kent_text_add(s->out, "\n");
+    s->out->failed = s->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+/* ---- geometry ---------------------------------------------------------------------
+ */
+
+typedef struct kent_symbol {
+    char text[24];
+} kent_symbol;
+
+__attribute__((format(printf, 1, 2))) static kent_symbol symbol(const char *fmt, ...)
+{
+    kent_symbol s;
+    va_list args;
+    va_start(args, fmt);
+    (void)vsnprintf(s.text, sizeof s.text, fmt, args);
+    va_end(args);
+    return s;
+}
+
+static double axis_of(kent_vec3 v, int axis)
+{
+    return axis == 0 ? v.x : axis == 1 ? v.y : v.z;
+}
+
+/* Direction of one leg out of the coordinates of its two points. */
+static void derive_leg(const kent_sheet *s, size_t port, kent_derivation *d)
+{
+    static const char AXES[] = "xyz";
+    const kent_port *p = &s->model->ports[s->fitting->port_first + port];
+    const kent_point *to = &s->model->points[p->toward];
+    const kent_vec3 step = kent_vec3_sub(to->at, s->fitting->at);
+    const int n = (int)port + 1;
+    char formula[160], says[160];
+
+    (void)snprintf(says, sizeof says, "Leg %d, towards %s", n, to->id);
+    kent_derivation_heading(d, says);
+    for (int a = 0; a < 3; a++) {
+        (void)snprintf(says, sizeof says, "%c of %s", AXES[a], to->id);
+        kent_derivation_put(d, symbol("%c%d", AXES[a], n).text, axis_of(to->at, a),
+                            KENT_LENGTH, KENT_GIVEN, says);
+    }
+    (void)snprintf(formula, sizeof formula, "sqrt((x%d-x0)^2+(y%d-y0)^2+(z%d-z0)^2)", n,
+                   n, n);
+    kent_derivation_work(d, symbol("L%d", n).text, kent_vec3_length(step), KENT_LENGTH,
+                         formula, "", "length in space");
+    for (int a = 0; a < 3; a++) {
+        const double share = axis_of(step, a) / kent_vec3_length(step);
+        (void)snprintf(formula, sizeof formula, "(%c%d-%c0)/L%d", AXES[a], n, AXES[a],
+                       n);
+        kent_derivation_work(d, symbol("n%d%c", n, AXES[a]).text, share, KENT_RATIO,
+                             formula, "", "direction out of the fitting");
+    }
+}
+
+/* The angle between two legs, with the cosine that both give. */
+static void derive_angle(const kent_sheet *s, size_t i, size_t j, const char *says,
+                         kent_derivation *d)
+{
+    const kent_port *ports = &s->model->ports[s->fitting->port_first];
+    const bool bend = s->fitting->type == KENT_BEND;
+    const double sign = bend ? -1.0 : 1.0; /* flow enters against the first leg */
+    const double cosine = sign * kent_vec3_dot(ports[i].direction, ports[j].direction);
+    const double angle =
+        kent_vec3_angle(kent_vec3_scale(sign, ports[i].direction), ports[j].direction);
+    char formula[160];
+    const int a = (int)i + 1, b = (int)j + 1;
+
+    (void)snprintf(formula, sizeof formula, "%s(n%dx*n%dx+n%dy*n%dy+n%dz*n%dz)",
+                   bend ? "-" : "", a, b, a, b, a, b);
+    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, "5.4",
+                         "cosine of the angle, by the two directions");
+    kent_derivation_put(d, "angle", angle, KENT_ANGLE, KENT_COMPUTED, says);
+    kent_derivation_work(d, "c'", cos(angle), KENT_RATIO, "cos(angle)", "",
+                         "check: the same cosine");
+}
+
+static void print_geometry(const kent_sheet *s)
+{
+    const kent_fitting *f = s->fitting;
+    const kent_port *ports = &s->model->ports[f->port_first];
+    kent_derivation d = {0};
+    bool drawn = f->point >= 0 && isfinite(f->at.x);
+    for (size_t i = 0; i < f->port_count; i++) {
+        drawn = drawn && ports[i].toward >= 0;
+    }
+    if (!drawn) {
+        kent_text_add(s->out, "Geometry: as stated in the case, no coordinates.\n");
+        return;
+    }
+    char says[160];
+    (void)snprintf(says, sizeof says, "Geometry of %s, x east, y north, z up", f->id);
+    kent_derivation_heading(&d, says);
+    kent_derivation_put(&d, "x0", f->at.x, KENT_LENGTH, KENT_GIVEN, "x of the fitting");
+    kent_derivation_put(&d, "y0", f->at.y, KENT_LENGTH, KENT_GIVEN, "y of the fitting");
+    kent_derivation_put(&d, "z0", f->at.z, KENT_LENGTH, KENT_GIVEN, "z of the fitting");
+    for (size_t i = 0; i < f->port_count; i++)
+        derive_leg(s, i, &d);
+    if (f->type == KENT_BEND && f->port_count == 2) {
+        kent_derivation_heading(&d, "Turn in space");
+        derive_angle(s, 0, 1, "turn of the bend in space", &d);
+    }
+    if ((f->type == KENT_TEE || f->type == KENT_WYE) && f->port_count == 3) {
+        kent_derivation_heading(&d, "Branch");
+        derive_angle(s, 0, 2, "between leg 1 and the branch", &d);
+    }
+    kent_steps_print(&d, s->units, s->limit, s->out);
+    kent_derivation_clear(&d);
+}
+
+/* ---- load cases -------------------------------------------------------------------
+ */
+
+static void case_row(const kent_sheet *s, size_t i, kent_table *t)
+{
+    const kent_load_case *c = &s->loads->cases[i];
+    const bool governs = s->holding->governing == (int)i;
+    const kent_sense sense = governs ? s->holding->sense : KENT_RESULTANT;
+    const kent_instant *at = &c->worst[sense];
+    const kent_vec3 thrust = at->set ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
+    const double whole = kent_vec3_length(thrust);
+    const double numbers[] = {thrust.x, thrust.y, thrust.z, whole};
+    kent_table_cell(t, "%s%s", c->name, governs ? " *" : "");
+    kent_table_cell(t, "%s", kent_shown_number(at->set ? at->time : NAN, 2).text);
+    kent_table_cell(
+        t, "%s",
+        kent_shown_quantity(KENT_PRESSURE, s->units, at->set ? at->pressure : NAN)
+            .text);
+    for (size_t k = 0; k < sizeof numbers / sizeof numbers[0]; k++) {
+        kent_table_cell(t, "%s",
+                        kent_shown_quantity(KENT_FORCE, s->units, numbers[k]).text);
+    }
+    kent_table_cell(t, "%s", kent_shown_number(c->safety_factor, 2).text);
+    kent_table_cell(
+        t, "%s",
+        kent_shown_quantity(KENT_FORCE, s->units, c->safety_factor * whole).text);
+}
+
+static void print_cases(const kent_sheet *s)
+{
+    const kent_shown bar = kent_shown_unit(KENT_PRESSURE, s->units);
+    const kent_shown kn = kent_shown_unit(KENT_FORCE, s->units);
+    const kent_column columns[] = {
+        {"load case", "", KENT_ALIGN_LEFT, true},
+        {"at", "s", KENT_ALIGN_RIGHT, false},
+        {"pressure", bar.text, KENT_ALIGN_RIGHT, false},
+        {"east", kn.text, KENT_ALIGN_RIGHT, false},
+        {"north", kn.text, KENT_ALIGN_RIGHT, false},
+        {"up", kn.text, KENT_ALIGN_RIGHT, false},
+        {"thrust", kn.text, KENT_ALIGN_RIGHT, false},
+        {"factor", "", KENT_ALIGN_RIGHT, false},
+        {"factored", kn.text, KENT_ALIGN_RIGHT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    kent_text_add(s->out, "\nLoad cases, each at the instant of its largest thrust\n");
+    for (size_t i = 0; i < s->loads->count; i++)
+        case_row(s, i, &t);
+    (void)kent_table_print(&t, s->limit, s->out);
+    kent_table_clear(&t);
+    if (s->holding->governing >= 0) {
+        static const char *const SENSES[KENT_SENSES] = {
+            "thrust", "sideways thrust", "upward thrust", "downward thrust"};
+        kent_text_add(s->out, "*  governs, by its %s\n", SENSES[s->holding->sense]);
+    }
+}
+
+/* ---- the calculation, and what stands beside it -----------------------------------
+ */
+
+static void print_runner_up(const kent_sheet *s)
+{
+    const kent_holding *h = s->holding;
+    kent_text words = {0};
+    if (h->governing < 0 || h->runner_up < 0) return;
+    kent_text_add(&words, "Runner-up: %s, %s factored",
+                  s->loads->cases[h->runner_up].name,
+                  kent_shown_with_unit(KENT_FORCE, s->units, h->runner_up_load).text);
+    if (h->design_thrust > 0.0) {
+        kent_text_add(&words, ", %.0f %% of what governs",
+                      100.0 * h->runner_up_load / h->design_thrust);
+    }
+    kent_text_add(&words, ".");
+    kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
+    s->out->failed = s->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+static void add_leg(const kent_sheet *s, const kent_leg *leg, kent_text *words)
+{
+    const kent_port *p = &s->model->ports[s->fitting->port_first + leg->port];
+    kent_text_add(words, "%s",
+                  kent_shown_with_unit(KENT_LENGTH, s->units, leg->length).text);
+    if (p->toward >= 0) {
+        kent_text_add(words, " towards %s", s->model->points[p->toward].id);
+    }
+    if (leg->pipes > 0) {
+        kent_text_add(words, ", %d whole pipe%s", leg->pipes,
+                      leg->pipes == 1 ? "" : "s");
+    }
+    if (!leg->fits) kent_text_add(words, " (does not fit before the next fitting)");
+}
+
+/* What holds it, and the restrained length beside it. */
+static void print_outcome(const kent_sheet *s)
+{
+    const kent_holding *h = s->holding;
+    kent_part parts[KENT_PARTS];
+    kent_text words = {0};
+    const size_t count = kent_shown_parts(s->loads, h, parts);
+    for (size_t i = 0; i < count; i++) {
+        const kent_part *p = &parts[i];
+        kent_text_reset(&words);
+        kent_text_add(
+            &words, "%s %s", i > 0 ? "and by:" : "Held by:",
+            kent_shown_part(s->model, s->fitting, h, p, s->units, KENT_ROOMY).text);
+        if (isfinite(p->factor_reached) && p->governing >= 0) {
+            kent_text_add(&words, ", against %s; factor reached %.2f, asked %.2f; ",
+                          s->loads->cases[p->governing].name, p->factor_reached,
+                          s->loads->cases[p->governing].safety_factor);
+            kent_text_add(&words, "load over resistance %.2f", p->utilisation);
+        }
+        kent_text_add(&words, ".");
+        kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
+    }
+    kent_text_reset(&words);
+    kent_text_add(&words, "Restrained length%s: ",
+                  h->chosen == KENT_RESTRAINED_JOINTS ? "" : " instead");
+    for (size_t i = 0; i < h->leg_count; i++) {
+        if (i > 0) kent_text_add(&words, "; ");
+        add_leg(s, &h->legs[i], &words);
+    }
+    if (h->leg_count == 0) {
+        kent_text_add(&words, "none can be given%s",
+                      h->needs_nothing ? "; none is needed" : "");
+    }
+    kent_text_add(&words, ".");
+    kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
+    s->out->failed = s->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+static void print_cautions(const kent_sheet *s)
+{
+    const kent_notes *cautions = &s->holding->cautions;
+    if (cautions->count > 0) kent_text_add(s->out, "\nCautions\n");
+    for (size_t i = 0; i < cautions->count; i++) {
+        kent_table_paragraph(s->out, s->limit, "!  ", cautions->text[i]);
+    }
+}
+
+/* Whether an assumed line above says the same ("weight: not asked for" of x, y, z). */
+static bool said_before(const kent_derivation *d, size_t index)
+{
+    for (size_t i = 0; i < index; i++) {
+        const kent_line *line = &d->lines[i];
+        if (line->symbol[0] == '\0' || line->source != KENT_ASSUMED) continue;
+        if (strcmp(line->says, d->lines[index].says) == 0) return true;
+    }
+    return false;
+}
+
+/* Assumed lines of this calculation, then those of the whole case. */
+static void print_needs(const kent_sheet *s)
+{
+    const kent_derivation *d = &s->holding->derivation;
+    const kent_notes *assumed = &s->model->assumed;
+    size_t count = assumed->count;
+    kent_text_add(s->out, "\nWhat it needs from you: a value in place of each assumed "
+                          "one\n");
+    for (size_t i = 0; i < d->count; i++) {
+        const kent_line *line = &d->lines[i];
+        char value[64];
+        kent_text words = {0};
+        if (line->symbol[0] == '\0' || line->source != KENT_ASSUMED) continue;
+        if (said_before(d, i)) continue;
+        kent_line_value(line, s->units, value, sizeof value);
+        kent_text_add(&words, "%s = %s: %s", line->symbol, value, line->says);
+        kent_table_paragraph(s->out, s->limit, "-  ", kent_text_of(&words));
+        s->out->failed = s->out->failed || words.failed;
+        kent_text_clear(&words);
+        count++;
+    }
+    for (size_t i = 0; i < assumed->count; i++) {
+        kent_text words = {0};
+        kent_shown_assumption(assumed->text[i], &words);
+        kent_table_paragraph(s->out, s->limit, "-  ", kent_text_of(&words));
+        s->out->failed = s->out->failed || words.failed;
+        kent_text_clear(&words);
+    }
+    if (count == 0) kent_text_add(s->out, "-  nothing: no value was assumed\n");
+}
+
+kent_status kent_report_explain(const kent_results *r, int fitting,
+                                const kent_report_options *o, kent_sink sink)
+{
+    kent_text out = {0};
+    const kent_sheet s = {.results = r,
+                          .model = r->model,
+                          .fitting = &r->model->fittings[fitting],
+                          .loads = &r->loads->fittings[fitting],
+                          .holding = &r->restraints->fittings[fitting],
+                          .units = o->units,
+                          .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
+                          .out = &out};
+    print_title(&s);
+    print_geometry(&s);
+    print_cases(&s);
+    kent_text_add(&out, "\n");
+    kent_steps_print(&s.holding->derivation, s.units, s.limit, &out);
+    kent_text_add(&out, "\n");
+    print_runner_up(&s);
+    print_outcome(&s);
+    print_cautions(&s);
+    print_needs(&s);
+    const kent_status status = kent_sink_flush(sink, &out);
+    kent_text_clear(&out);
+    return status;
+}

@@ -1,0 +1,538 @@
+#include "kent_pressures.h"
+#include "kent_shown.h"
+#include "kent_sink.h"
+#include "kent_summary.h"
+#include "kent_table.h"
+
+#include <math.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+/* What the parts of one printed report share. */
+typedef struct kent_page {
+    const kent_results *results;
+    const kent_model *model;
+    kent_system units;
+    size_t limit; /* columns of a line; 0: none */
+    size_t
+        *order; /* [fitting_count] what cannot be held first, then along the routes */
+    char (*letter)[4]; /* [fitting_count] of its note; "" none */
+    bool cut;          /* a name was cut short */
+    kent_text *out;
+} kent_page;
+
+/* ---- the page ---------------------------------------------------------------------
+ */
+
+/* 0: a, 25: z, 26: aa ... */
+static void letter_of(size_t index, char out[4])
+{
+    char backwards[4] = {0};
+    size_t length = 0;
+    for (size_t n = index + 1; n > 0 && length < 3; n = (n - 1) / 26) {
+        backwards[length++] = (char)('a' + (n - 1) % 26);
+    }
+    for (size_t i = 0; i < length; i++)
+        out[i] = backwards[length - 1 - i];
+    out[length] = '\0';
+}
+
+static kent_status page_open(kent_page *page)
+{
+    const size_t count = page->model->fitting_count;
+    page->order = kent_alloc(count, sizeof *page->order);
+    page->letter = kent_alloc(count, sizeof *page->letter);
+    if (!page->order || !page->letter) return KENT_E_NOMEM;
+    size_t placed = 0;
+    for (int held = 0; held < 2; held++) {
+        for (size_t i = 0; i < count; i++) {
+            const kent_holding *h = &page->results->restraints->fittings[i];
+            if (kent_shown_not_held(h) == (held == 1)) continue;
+            if (held == 0 && h->cautions.count > 0) {
+                letter_of(placed, page->letter[i]);
+            }
+            page->order[placed++] = i;
+        }
+    }
+    return KENT_OK;
+}
+
+static void page_close(kent_page *page)
+{
+    free(page->order);
+    free(page->letter);
+}
+
+static const char *plural(size_t count) { return count == 1 ? "" : "s"; }
+
+static void print_title(kent_page *page)
+{
+    const kent_model *m = page->model;
+    kent_text facts = {0};
+    kent_table_paragraph(page->out, page->limit, "",
+                         m->title[0] != '\0' ? m->title : "(untitled)");
+    kent_text_add(&facts, "%zu fitting%s · %zu scenario%s · gauge pressure",
+                  m->fitting_count, plural(m->fitting_count),
+                  page->results->scenario_count, plural(page->results->scenario_count));
+    if (isfinite(m->water.temperature)) {
+        const kent_shown t =
+            kent_shown_with_unit(KENT_TEMPERATURE, page->units, m->water.temperature);
+        kent_text_add(&facts, " · water %s", t.text);
+    }
+    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&facts));
+    page->out->failed = page->out->failed || facts.failed;
+    kent_text_clear(&facts);
+    kent_text_add(page->out, "\n");
+}
+
+/* ---- the table of fittings --------------------------------------------------------
+ */
+
+enum {
+    STATION,
+    POINT,
+    FITTING,
+    SIZE,
+    GOVERNED,
+    PRESSURE,
+    THRUST,
+    PUSHES,
+    HELD_BY,
+    FACTOR,
+    LOAD,
+    FITTING_COLUMNS
+};
+
+/* The cells of one part. again: it is not the fitting's first, and what pushes is the
+ * same instant as in the row above. */
+static void part_cells(const kent_page *page, size_t i, const kent_part *part,
+                       bool again, kent_room room, kent_table *t)
+{
+    const kent_model *m = page->model;
+    const kent_system units = page->units;
+    const kent_fitting *f = &m->fittings[i];
+    const kent_holding *h = &page->results->restraints->fittings[i];
+    const kent_fitting_loads *loads = &page->results->loads->fittings[i];
+    const kent_instant *at = kent_part_instant(loads, part);
+    const kent_vec3 thrust = at ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
+    const char *letter = page->letter[i];
+    const kent_shown holding = kent_shown_part(m, f, h, part, units, room);
+    /* one decimal less than elsewhere: the pressures have a table of their own */
+    const kent_shown pressure = kent_shown_number(
+        kent_units_shown(KENT_PRESSURE, units, at ? at->pressure : NAN),
+        kent_units_display(KENT_PRESSURE, units).decimals - 1);
+
+    if (again) {
+        for (int blank = 0; blank < 4; blank++)
+            kent_table_cell(t, "%s", "");
+    } else {
+        kent_table_cell(t, "%s", kent_shown_governing(loads, part, room).text);
+        kent_table_cell(t, "%s", pressure.text);
+        kent_table_cell(
+            t, "%s",
+            kent_shown_quantity(KENT_FORCE, units, kent_vec3_length(thrust)).text);
+        kent_table_cell(t, "%s", kent_shown_push(m, f, thrust, units, room).text);
+    }
+    if (letter[0] == '\0') {
+        kent_table_cell(t, "%s", holding.text);
+    } else {
+        kent_table_cell(t, room == KENT_ROOMY ? "%s, see %s" : "%s, %s", holding.text,
+                        letter);
+    }
+    kent_table_cell(t, "%s", kent_shown_number(part->factor_reached, 2).text);
+    kent_table_cell(t, "%s", kent_shown_number(part->utilisation, 2).text);
+}
+
+static bool same_push(const kent_fitting_loads *loads, const kent_part *a,
+                      const kent_part *b)
+{
+    const kent_instant *x = kent_part_instant(loads, a);
+    const kent_instant *y = kent_part_instant(loads, b);
+    if (!x || !y || a->governing != b->governing) return false;
+    return (isnan(x->time) && isnan(y->time)) || x->time == y->time;
+}
+
+static void fitting_rows(const kent_page *page, size_t i, kent_room room, kent_table *t)
+{
+    const kent_model *m = page->model;
+    const kent_fitting *f = &m->fittings[i];
+    const kent_fitting_loads *loads = &page->results->loads->fittings[i];
+    kent_part parts[KENT_PARTS];
+    const size_t count =
+        kent_shown_parts(loads, &page->results->restraints->fittings[i], parts);
+    for (size_t p = 0; p < count; p++) {
+        if (p == 0) {
+            kent_table_cell(t, "%s", kent_shown_station(page->units, f->station).text);
+            kent_table_cell(t, "%s", f->id);
+            kent_table_cell(t, "%s", kent_shown_fitting(m, f, page->units, room).text);
+            kent_table_cell(t, "%s", kent_shown_size(m, f, page->units).text);
+        } else {
+            for (int blank = 0; blank < 4; blank++)
+                kent_table_cell(t, "%s", "");
+        }
+        const bool again = p > 0 && same_push(loads, &parts[0], &parts[p]);
+        part_cells(page, i, &parts[p], again, room, t);
+    }
+}
+
+/* Prints the table with so much room; false where it needs more and there is less to
+ * be had. */
+static bool try_fittings(kent_page *page, kent_room room)
+{
+    const bool si = page->units == KENT_SI, roomy = room == KENT_ROOMY;
+    const kent_shown inch = kent_shown_unit(KENT_DIAMETER, page->units);
+    const kent_shown bar = kent_shown_unit(KENT_PRESSURE, page->units);
+    const kent_shown kn = kent_shown_unit(KENT_FORCE, page->units);
+    const kent_shown m = kent_shown_unit(KENT_LENGTH, page->units);
+    char arrows[KENT_SHOWN + 16], sides[KENT_SHOWN + 16];
+    (void)snprintf(arrows, sizeof arrows, "↑ ↓ in %s", kn.text);
+    (void)snprintf(sides, sizeof sides, "w × h × t in %s", m.text);
+    const kent_column columns[FITTING_COLUMNS] = {
+        [STATION] = {roomy ? "station" : "sta.", "", KENT_ALIGN_LEFT, false},
+        [POINT] = {"point", "", KENT_ALIGN_LEFT, true},
+        [FITTING] = {"fitting", "", KENT_ALIGN_LEFT, true},
+        [SIZE] = {si ? "DN" : "size", si ? "" : inch.text, KENT_ALIGN_RIGHT, false},
+        [GOVERNED] = {"governed by", "", KENT_ALIGN_LEFT, true},
+        [PRESSURE] = {roomy ? "pressure" : "", bar.text, KENT_ALIGN_RIGHT, false},
+        [THRUST] = {roomy ? "thrust" : "", kn.text, KENT_ALIGN_RIGHT, false},
+        [PUSHES] = {"pushes", arrows, KENT_ALIGN_LEFT, false},
+        [HELD_BY] = {"held by", sides, KENT_ALIGN_LEFT, false},
+        [FACTOR] = {"×SF", "", KENT_ALIGN_RIGHT, false},
+        [LOAD] = {"load", "/res", KENT_ALIGN_RIGHT, false},
+    };
+    kent_table t = {.columns = columns, .column_count = FITTING_COLUMNS};
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        fitting_rows(page, page->order[i], room, &t);
+    }
+    const size_t gaps = FITTING_COLUMNS - 1; /* columns can stand closer by one each */
+    const size_t least = kent_table_width(&t) - (roomy ? 0 : gaps);
+    const bool fits = page->limit == 0 || least <= page->limit || room == KENT_TIGHTEST;
+    if (fits && kent_table_print(&t, page->limit, page->out)) page->cut = true;
+    kent_table_clear(&t);
+    return fits;
+}
+
+static void print_fittings(kent_page *page)
+{
+    for (kent_room room = KENT_ROOMY; room <= KENT_TIGHTEST; room++) {
+        if (try_fittings(page, room)) return;
+    }
+}
+
+/* ---- the notes under it -----------------------------------------------------------
+ */
+
+static void join_notes(const kent_notes *notes, kent_text *words)
+{
+    for (size_t i = 0; i < notes->count; i++) {
+        kent_text_add(words, "%s%s", i > 0 ? "; " : "", notes->text[i]);
+    }
+}
+
+/* Why each fitting that is not held is not, and what would help. */
+static void print_refusals(kent_page *page)
+{
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        const size_t f = page->order[i];
+        kent_text lead = {0}, words = {0};
+        if (page->letter[f][0] == '\0') continue;
+        kent_text_add(&lead, "%s  ", page->letter[f]);
+        kent_text_add(&words, "%s: ", page->model->fittings[f].id);
+        join_notes(&page->results->restraints->fittings[f].cautions, &words);
+        kent_table_paragraph(page->out, page->limit, kent_text_of(&lead),
+                             kent_text_of(&words));
+        page->out->failed = page->out->failed || lead.failed || words.failed;
+        kent_text_clear(&words);
+        kent_text_clear(&lead);
+    }
+}
+
+static bool has_note(const kent_notes *notes, const char *caution)
+{
+    for (size_t k = 0; k < notes->count; k++) {
+        if (strcmp(notes->text[k], caution) == 0) return true;
+    }
+    return false;
+}
+
+/* One caution with every fitting that has it. */
+static void print_caution(kent_page *page, const char *caution)
+{
+    enum { NAMED = 8 };
+    size_t named = 0;
+    kent_text words = {0};
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        const size_t f = page->order[i];
+        if (page->letter[f][0] != '\0') continue;
+        if (!has_note(&page->results->restraints->fittings[f].cautions, caution)) {
+            continue;
+        }
+        if (named < NAMED) {
+            kent_text_add(&words, "%s%s", named > 0 ? ", " : "",
+                          page->model->fittings[f].id);
+        }
+        named++;
+    }
+    if (named > NAMED) kent_text_add(&words, " and %zu more", named - NAMED);
+    kent_text_add(&words, ": %s", caution);
+    kent_table_paragraph(page->out, page->limit, "-  ", kent_text_of(&words));
+    page->out->failed = page->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+static void print_cautions(kent_page *page)
+{
+    kent_notes distinct = {0};
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        const size_t f = page->order[i];
+        const kent_notes *notes = &page->results->restraints->fittings[f].cautions;
+        for (size_t k = 0; page->letter[f][0] == '\0' && k < notes->count; k++) {
+            kent_notes_add(&distinct, "%s", notes->text[k]);
+        }
+    }
+    for (size_t k = 0; k < distinct.count; k++) {
+        print_caution(page, distinct.text[k]);
+    }
+    const kent_notes *all = &page->results->cautions;
+    for (size_t k = 0; k < all->count; k++) {
+        kent_table_paragraph(page->out, page->limit, "!  ", all->text[k]);
+    }
+    page->out->failed = page->out->failed || distinct.failed;
+    kent_notes_clear(&distinct);
+}
+
+/* "Factor asked 1.50", or the range where load cases ask for different ones. */
+static void add_factors(const kent_page *page, kent_text *words)
+{
+    double least = NAN, most = NAN;
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        const double asked = page->results->restraints->fittings[i].factor_asked;
+        least = fmin(least, asked);
+        most = fmax(most, asked);
+    }
+    if (isnan(least)) return;
+    kent_text_add(words, "×SF is the factor reached; asked %.2f", least);
+    if (most > least) kent_text_add(words, " to %.2f by load case", most);
+    kent_text_add(words, ". ");
+}
+
+static void print_totals(kent_page *page)
+{
+    const kent_restraints *all = page->results->restraints;
+    const size_t assumed = page->model->assumed.count;
+    kent_text words = {0};
+    add_factors(page, &words);
+    const kent_shown volume =
+        kent_shown_number(kent_units_shown(KENT_VOLUME, page->units, all->concrete), 1);
+    kent_text_add(&words, "Concrete %s %s", volume.text,
+                  kent_shown_unit(KENT_VOLUME, page->units).text);
+    if (all->not_held > 0) {
+        kent_text_add(&words, " without the %zu fitting%s that nothing here can hold",
+                      all->not_held, plural(all->not_held));
+    }
+    kent_text_add(&words, ". ");
+    if (assumed > 0) {
+        kent_text_add(&words, "%zu value%s assumed: see `kentledge check`.", assumed,
+                      plural(assumed));
+    }
+    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+    if (page->cut) {
+        kent_table_paragraph(page->out, page->limit, "",
+                             "Names that end in … are whole with --wide.");
+    }
+    page->out->failed = page->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+/* ---- the table of pressures -------------------------------------------------------
+ */
+
+static void pressure_row(const kent_page *page, size_t i, kent_table *t)
+{
+    const kent_pressures p = kent_pressures_of(page->results, i);
+    kent_table_cell(t, "%s", page->model->fittings[i].id);
+    for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
+        const kent_shown number =
+            kent_shown_quantity(KENT_PRESSURE, page->units, p.at[k]);
+        kent_table_cell(t, "%s%s", number.text, k == p.governs ? "*" : " ");
+    }
+    kent_table_cell(t, "%s ",
+                    kent_shown_quantity(KENT_PRESSURE, page->units, p.rating).text);
+}
+
+static void print_pressures(kent_page *page)
+{
+    const kent_shown unit = kent_shown_unit(KENT_PRESSURE, page->units);
+    const char *bar = unit.text;
+    const kent_column columns[] = {
+        {"point", "", KENT_ALIGN_LEFT, true},
+        {"steady ", bar, KENT_ALIGN_RIGHT, false},
+        {"static ", bar, KENT_ALIGN_RIGHT, false},
+        {"test ", bar, KENT_ALIGN_RIGHT, false},
+        {"highest ", bar, KENT_ALIGN_RIGHT, false},
+        {"lowest ", bar, KENT_ALIGN_RIGHT, false},
+        {"rating ", bar, KENT_ALIGN_RIGHT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < page->model->fitting_count; i++) {
+        const size_t f = page->order[i];
+        if (page->model->fittings[f].point >= 0) pressure_row(page, f, &t);
+    }
+    if (t.cell_count > 0) {
+        kent_text_add(page->out, "\n");
+        if (kent_table_print(&t, page->limit, page->out)) page->cut = true;
+        kent_text_add(page->out, "*  the load case that governs\n");
+    }
+    kent_table_clear(&t);
+}
+
+/* ---- what the scenarios did -------------------------------------------------------
+ */
+
+static void add_extreme(const kent_page *page, const kent_extreme *e, kent_text *words)
+{
+    const kent_model *m = page->model;
+    kent_text_add(words, "%s",
+                  kent_shown_with_unit(KENT_PRESSURE, page->units, e->pressure).text);
+    if (e->point >= 0) kent_text_add(words, " at %s", m->points[e->point].id);
+    if (e->span >= 0) {
+        kent_text_add(words, " in pipe %s, %s from its start", m->spans[e->span].id,
+                      kent_shown_with_unit(KENT_LENGTH, page->units, e->chainage).text);
+    }
+    if (isfinite(e->time)) kent_text_add(words, " (%.1f s)", e->time);
+}
+
+/* The whole difference between two grids, m of head, to two digits. */
+static void add_band(const kent_page *page, double head, kent_text *words)
+{
+    const kent_model *m = page->model;
+    if (!isfinite(head)) return;
+    const double band = head * m->water.density * m->gravity;
+    kent_text_add(words, "; grid band ±%.2g %s",
+                  kent_units_shown(KENT_PRESSURE, page->units, band),
+                  kent_shown_unit(KENT_PRESSURE, page->units).text);
+}
+
+static void print_scenario(kent_page *page, size_t index)
+{
+    const kent_model *m = page->model;
+    const kent_scenario_result *s = &page->results->scenarios[index];
+    const kent_scenario *given = &m->scenarios[s->scenario];
+    const kent_extreme high = kent_extreme_highest(page->results, index);
+    const kent_extreme low = kent_extreme_lowest(page->results, index);
+    kent_text words = {0};
+    kent_text_add(&words, "%s", given->id);
+    if (given->title[0] != '\0' && strcmp(given->title, given->id) != 0) {
+        kent_text_add(&words, ": %s", given->title);
+    }
+    kent_text_add(&words, " (%s, %.0f s). Highest ", kent_class_word(given->class_of),
+                  given->duration);
+    add_extreme(page, &high, &words);
+    kent_text_add(&words, ", lowest ");
+    add_extreme(page, &low, &words);
+    add_band(page, s->uncertainty, &words);
+    kent_text_add(&words, ".");
+    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+    page->out->failed = page->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+/* The worst of all scenarios; said only where there are several. */
+static void print_overall(kent_page *page)
+{
+    const size_t count = page->results->scenario_count;
+    kent_extreme high = {.pressure = NAN}, low = {.pressure = NAN};
+    double band = NAN;
+    kent_text words = {0};
+    if (count < 2) return;
+    for (size_t i = 0; i < count; i++) {
+        const kent_extreme h = kent_extreme_highest(page->results, i);
+        const kent_extreme l = kent_extreme_lowest(page->results, i);
+        if (!(h.pressure <= high.pressure)) high = h;
+        if (!(l.pressure >= low.pressure)) low = l;
+        band = fmax(band, page->results->scenarios[i].uncertainty);
+    }
+    kent_text_add(&words, "Over all: highest ");
+    add_extreme(page, &high, &words);
+    kent_text_add(&words, ", lowest ");
+    add_extreme(page, &low, &words);
+    add_band(page, band, &words);
+    kent_text_add(&words, ".");
+    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+    page->out->failed = page->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+static void print_scenarios(kent_page *page)
+{
+    const size_t count = page->results->scenario_count;
+    kent_text_add(page->out, "\n");
+    for (size_t i = 0; i < count; i++)
+        print_scenario(page, i);
+    print_overall(page);
+    if (count == 0 && page->model->span_count > 0) {
+        kent_text_add(page->out,
+                      "No scenario was run: no surge is in these figures.\n");
+    }
+}
+
+/* ---- --wide, and the end ----------------------------------------------------------
+ */
+
+/* Every further column of summary.csv, as one more table. */
+static void print_rest(kent_page *page)
+{
+    const kent_report_options o = {.units = page->units, .wide = true};
+    kent_text_add(page->out, "\n");
+    kent_summary_table(page->results, &o, page->order, page->out);
+}
+
+static void print_end(kent_page *page)
+{
+    const kent_model *m = page->model;
+    kent_text words = {0};
+    kent_text_add(page->out, "\n");
+    kent_table_paragraph(
+        page->out, page->limit, "",
+        "Figures for competent, licensed engineers to judge. Local codes, the "
+        "utility's "
+        "standard and the manufacturer's instructions prevail over them. Confirm soil "
+        "values on site before anything is built.");
+    kent_text_add(&words, "kentledge %s", KENT_VERSION);
+    if (m->file_count > 0) {
+        kent_text_add(&words, " · %s · checksum %016llx", m->files[0], m->checksum);
+    }
+    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+    page->out->failed = page->out->failed || words.failed;
+    kent_text_clear(&words);
+}
+
+kent_status kent_report_tables(const kent_results *r, const kent_report_options *o,
+                               kent_sink sink)
+{
+    kent_text out = {0};
+    kent_page page = {.results = r,
+                      .model = r->model,
+                      .units = o->units,
+                      .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
+                      .out = &out};
+    kent_status status = page_open(&page);
+    if (status) goto done;
+    print_title(&page);
+    print_fittings(&page);
+    kent_text_add(&out, "\n");
+    print_refusals(&page);
+    print_cautions(&page);
+    print_totals(&page);
+    print_pressures(&page);
+    print_scenarios(&page);
+    if (o->wide) print_rest(&page);
+    print_end(&page);
+    status = kent_sink_flush(sink, &out);
+done:
+    page_close(&page);
+    kent_text_clear(&out);
+    return status;
+}

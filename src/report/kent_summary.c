@@ -1,0 +1,447 @@
+#include "kent_summary.h"
+
+#include "kent_pressures.h"
+#include "kent_shown.h"
+#include "kent_sink.h"
+#include "kent_table.h"
+
+#include <math.h>
+#include <stdlib.h>
+#include <string.h>
+
+/* One fitting with everything known of it. */
+typedef struct kent_row {
+    const kent_results *results;
+    const kent_model *model;
+    kent_system units;
+    const kent_fitting *fitting;
+    const kent_fitting_loads *loads;
+    const kent_holding *holding;
+    const kent_load_case *governing; /* NULL: none */
+    const kent_instant *at;          /* NULL: none */
+    kent_pressures pressures;
+} kent_row;
+
+static kent_row row_of(const kent_results *r, kent_system units, size_t fitting)
+{
+    kent_row row = {.results = r,
+                    .model = r->model,
+                    .units = units,
+                    .fitting = &r->model->fittings[fitting],
+                    .loads = &r->loads->fittings[fitting],
+                    .holding = &r->restraints->fittings[fitting],
+                    .pressures = kent_pressures_of(r, fitting)};
+    row.at = kent_shown_instant(row.loads, row.holding);
+    if (row.at) row.governing = &row.loads->cases[row.holding->governing];
+    return row;
+}
+
+/* ---- columns of numbers: SI -------------------------------------------------------
+ */
+
+static double station(const kent_row *r) { return r->fitting->station; }
+static double angle(const kent_row *r) { return r->fitting->angle; }
+static double size(const kent_row *r) { return r->fitting->size; }
+static double branch(const kent_row *r) { return r->fitting->branch_size; }
+static double time_at(const kent_row *r) { return r->at ? r->at->time : NAN; }
+static double pressure(const kent_row *r) { return r->at ? r->at->pressure : NAN; }
+static double design(const kent_row *r) { return r->holding->design_thrust; }
+static double asked(const kent_row *r) { return r->holding->factor_asked; }
+static double reached(const kent_row *r) { return r->holding->factor_reached; }
+static double used(const kent_row *r) { return r->holding->utilisation; }
+static double runner_up(const kent_row *r) { return r->holding->runner_up_load; }
+static double joints(const kent_row *r) { return r->holding->restrained_length; }
+static double cover(const kent_row *r) { return r->fitting->cover; }
+static double rating(const kent_row *r) { return r->pressures.rating; }
+
+static kent_vec3 thrust(const kent_row *r)
+{
+    return r->at ? r->at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
+}
+
+static double thrust_x(const kent_row *r) { return thrust(r).x; }
+static double thrust_y(const kent_row *r) { return thrust(r).y; }
+static double thrust_z(const kent_row *r) { return thrust(r).z; }
+static double whole(const kent_row *r) { return kent_vec3_length(thrust(r)); }
+static double across(const kent_row *r)
+{
+    return r->at ? kent_thrust_horizontal(thrust(r)) : NAN;
+}
+
+static double azimuth(const kent_row *r)
+{
+    const kent_fitting *f = r->fitting;
+    const bool schematic = f->point >= 0 && isnan(r->model->points[f->point].at.x);
+    if (!r->at || schematic || across(r) <= 0.0) return NAN;
+    return kent_thrust_azimuth(thrust(r));
+}
+
+static double highest_seal(const kent_row *r)
+{
+    double most = NAN;
+    for (size_t i = 0; i < r->fitting->port_count; i++) {
+        most = fmax(most, r->model->ports[r->fitting->port_first + i].seal_diameter);
+    }
+    return most;
+}
+
+static double of_block(const kent_row *r, double value)
+{
+    return r->holding->held && r->holding->block.type != KENT_BLOCK_NONE ? value : NAN;
+}
+
+static double block_width(const kent_row *r)
+{
+    return of_block(r, r->holding->block.width);
+}
+static double block_height(const kent_row *r)
+{
+    return of_block(r, r->holding->block.height);
+}
+static double block_thickness(const kent_row *r)
+{
+    return of_block(r, r->holding->block.thickness);
+}
+static double block_volume(const kent_row *r)
+{
+    return of_block(r, r->holding->block.volume);
+}
+static double block_area(const kent_row *r)
+{
+    return of_block(r, r->holding->block.bearing_area);
+}
+static double block_bearing(const kent_row *r)
+{
+    return of_block(r, r->holding->block.bearing_pressure);
+}
+
+static double of_face(const kent_row *r, double value)
+{
+    return r->holding->block.has_face ? of_block(r, value) : NAN;
+}
+
+static double face_width(const kent_row *r)
+{
+    return of_face(r, r->holding->block.face.width);
+}
+static double face_height(const kent_row *r)
+{
+    return of_face(r, r->holding->block.face.height);
+}
+static double face_thickness(const kent_row *r)
+{
+    return of_face(r, r->holding->block.face_thickness);
+}
+static double face_volume(const kent_row *r)
+{
+    return of_face(r, r->holding->block.face_volume);
+}
+
+static double steady(const kent_row *r)
+{
+    return r->pressures.at[KENT_PRESSURE_STEADY];
+}
+static double static_of(const kent_row *r)
+{
+    return r->pressures.at[KENT_PRESSURE_STATIC];
+}
+static double test(const kent_row *r) { return r->pressures.at[KENT_PRESSURE_TEST]; }
+static double highest(const kent_row *r)
+{
+    return r->pressures.at[KENT_PRESSURE_HIGHEST];
+}
+static double lowest(const kent_row *r)
+{
+    return r->pressures.at[KENT_PRESSURE_LOWEST];
+}
+
+/* ---- columns of words -------------------------------------------------------------
+ */
+
+static void point(const kent_row *r, kent_text *out)
+{
+    kent_text_add(out, "%s", r->fitting->id);
+}
+
+static void type(const kent_row *r, kent_text *out)
+{
+    kent_text_add(out, "%s", kent_fitting_type_word(r->fitting->type));
+}
+
+static void orientation(const kent_row *r, kent_text *out)
+{
+    if (r->fitting->type != KENT_BEND) return;
+    kent_text_add(out, "%s", kent_orientation_word(r->fitting->orientation));
+}
+
+static void soil(const kent_row *r, kent_text *out)
+{
+    if (r->fitting->soil < 0) return;
+    kent_text_add(out, "%s", r->model->soils[r->fitting->soil].id);
+}
+
+static void load_case(const kent_row *r, kent_text *out)
+{
+    if (r->governing) kent_text_add(out, "%s", r->governing->name);
+}
+
+static void scenario_id(const kent_results *r, int scenario, kent_text *out)
+{
+    if (scenario < 0) return;
+    kent_text_add(out, "%s", r->model->scenarios[scenario].id);
+}
+
+static void scenario(const kent_row *r, kent_text *out)
+{
+    if (r->governing) scenario_id(r->results, r->governing->scenario, out);
+}
+
+static void highest_in(const kent_row *r, kent_text *out)
+{
+    const int i = r->pressures.highest_in;
+    if (i >= 0) scenario_id(r->results, r->results->scenarios[i].scenario, out);
+}
+
+static void lowest_in(const kent_row *r, kent_text *out)
+{
+    const int i = r->pressures.lowest_in;
+    if (i >= 0) scenario_id(r->results, r->results->scenarios[i].scenario, out);
+}
+
+static void pushes(const kent_row *r, kent_text *out)
+{
+    if (!r->at) return;
+    kent_text_add(
+        out, "%s",
+        kent_shown_push(r->model, r->fitting, thrust(r), r->units, KENT_ROOMY).text);
+}
+
+static void restraint(const kent_row *r, kent_text *out)
+{
+    kent_text_add(out, "%s", kent_restraint_word(r->holding->chosen));
+}
+
+static void block_type(const kent_row *r, kent_text *out)
+{
+    const bool block = r->holding->held && r->holding->block.type != KENT_BLOCK_NONE;
+    kent_text_add(out, "%s",
+                  kent_block_word(block ? r->holding->block.type : KENT_BLOCK_NONE));
+}
+
+static void held(const kent_row *r, kent_text *out)
+{
+    kent_text_add(out, "%s",
+                  r->holding->needs_nothing ? "not needed"
+                  : r->holding->held        ? "yes"
+                                            : "no");
+}
+
+static void runner_up_case(const kent_row *r, kent_text *out)
+{
+    const int i = r->holding->runner_up;
+    if (i < 0 || (size_t)i >= r->loads->count) return;
+    kent_text_add(out, "%s", r->loads->cases[i].name);
+}
+
+/* What the pressure acts on at each port, in port order. */
+static void seals(const kent_row *r, kent_text *out)
+{
+    for (size_t i = 0; i < r->fitting->port_count; i++) {
+        const kent_port *port = &r->model->ports[r->fitting->port_first + i];
+        kent_text_add(out, "%s%.6g", i > 0 ? "; " : "",
+                      kent_units_shown(KENT_DIAMETER, r->units, port->seal_diameter));
+    }
+}
+
+static void cautions(const kent_row *r, kent_text *out)
+{
+    for (size_t i = 0; i < r->holding->cautions.count; i++) {
+        kent_text_add(out, "%s%s", i > 0 ? "; " : "", r->holding->cautions.text[i]);
+    }
+}
+
+/* ---- the list ---------------------------------------------------------------------
+ */
+
+enum {
+    NARROW = 1, /* the narrow table shows it already */
+    UNITED = 2  /* words, but with the unit of `kind` in the heading */
+};
+
+typedef struct kent_summary_column {
+    const char *head;
+    kent_kind kind;
+    double (*number)(const kent_row *row); /* SI; NULL: words */
+    void (*words)(const kent_row *row, kent_text *out);
+    unsigned flags;
+} kent_summary_column;
+
+static const kent_summary_column COLUMNS[] = {
+    {"station", KENT_LENGTH, station, NULL, NARROW},
+    {"point", KENT_RATIO, NULL, point, 0},
+    {"fitting", KENT_RATIO, NULL, type, NARROW},
+    {"angle", KENT_ANGLE, angle, NULL, NARROW},
+    {"orientation", KENT_RATIO, NULL, orientation, NARROW},
+    {"bore", KENT_DIAMETER, size, NULL, NARROW},
+    {"other bore", KENT_DIAMETER, branch, NULL, NARROW},
+    {"load case", KENT_RATIO, NULL, load_case, NARROW},
+    {"scenario", KENT_RATIO, NULL, scenario, NARROW},
+    {"time", KENT_TIME, time_at, NULL, NARROW},
+    {"pressure", KENT_PRESSURE, pressure, NULL, NARROW},
+    {"thrust", KENT_FORCE, whole, NULL, NARROW},
+    {"pushes", KENT_RATIO, NULL, pushes, NARROW},
+    {"restraint", KENT_RATIO, NULL, restraint, NARROW},
+    {"held", KENT_RATIO, NULL, held, NARROW},
+    {"block", KENT_RATIO, NULL, block_type, NARROW},
+    {"width", KENT_LENGTH, block_width, NULL, NARROW},
+    {"height", KENT_LENGTH, block_height, NULL, NARROW},
+    {"thickness", KENT_LENGTH, block_thickness, NULL, NARROW},
+    {"volume", KENT_VOLUME, block_volume, NULL, NARROW},
+    {"factor reached", KENT_RATIO, reached, NULL, NARROW},
+    {"load over resistance", KENT_RATIO, used, NULL, NARROW},
+    {"factor asked", KENT_RATIO, asked, NULL, 0},
+    {"factored thrust", KENT_FORCE, design, NULL, 0},
+    {"thrust east", KENT_FORCE, thrust_x, NULL, 0},
+    {"thrust north", KENT_FORCE, thrust_y, NULL, 0},
+    {"thrust up", KENT_FORCE, thrust_z, NULL, 0},
+    {"horizontal", KENT_FORCE, across, NULL, 0},
+    {"azimuth", KENT_ANGLE, azimuth, NULL, 0},
+    {"largest seal diameter", KENT_DIAMETER, highest_seal, NULL, 0},
+    {"seal diameters", KENT_DIAMETER, NULL, seals, UNITED},
+    {"steady pressure", KENT_PRESSURE, steady, NULL, NARROW},
+    {"static pressure", KENT_PRESSURE, static_of, NULL, NARROW},
+    {"test pressure", KENT_PRESSURE, test, NULL, NARROW},
+    {"highest pressure", KENT_PRESSURE, highest, NULL, NARROW},
+    {"highest in", KENT_RATIO, NULL, highest_in, 0},
+    {"lowest pressure", KENT_PRESSURE, lowest, NULL, NARROW},
+    {"lowest in", KENT_RATIO, NULL, lowest_in, 0},
+    {"rating", KENT_PRESSURE, rating, NULL, NARROW},
+    {"runner-up", KENT_RATIO, NULL, runner_up_case, 0},
+    {"runner-up factored thrust", KENT_FORCE, runner_up, NULL, 0},
+    {"soil", KENT_RATIO, NULL, soil, 0},
+    {"cover", KENT_LENGTH, cover, NULL, 0},
+    {"area asked for", KENT_AREA, block_area, NULL, 0},
+    {"bearing pressure", KENT_STRESS, block_bearing, NULL, 0},
+    {"face width", KENT_LENGTH, face_width, NULL, 0},
+    {"face height", KENT_LENGTH, face_height, NULL, 0},
+    {"face thickness", KENT_LENGTH, face_thickness, NULL, 0},
+    {"face volume", KENT_VOLUME, face_volume, NULL, 0},
+    {"restrained length", KENT_LENGTH, joints, NULL, 0},
+    {"cautions", KENT_RATIO, NULL, cautions, NARROW},
+};
+enum { COLUMN_COUNT = sizeof COLUMNS / sizeof COLUMNS[0] };
+
+static bool has_unit(const kent_summary_column *c, kent_system units)
+{
+    return (c->number || (c->flags & UNITED)) &&
+           kent_units_display(c->kind, units).unit[0] != '\0';
+}
+
+/* ---- as CSV -----------------------------------------------------------------------
+ */
+
+void kent_summary_field(kent_text *out, const char *text)
+{
+    if (!strpbrk(text, ",\"\r\n")) {
+        kent_text_add(out, "%s", text);
+        return;
+    }
+    kent_text_add(out, "\"");
+    for (const char *s = text; *s != '\0'; s++) {
+        kent_text_add(out, *s == '"' ? "\"\"" : "%c", *s);
+    }
+    kent_text_add(out, "\"");
+}
+
+static void add_heading(const kent_summary_column *c, kent_system units, kent_text *out)
+{
+    kent_text_add(out, "%s", c->head);
+    if (has_unit(c, units)) {
+        kent_text_add(out, " [%s]", kent_units_display(c->kind, units).unit);
+    }
+}
+
+static void add_field(const kent_row *row, const kent_summary_column *c,
+                      kent_text *words, kent_text *out)
+{
+    if (!c->number) {
+        kent_text_reset(words);
+        c->words(row, words);
+        kent_summary_field(out, kent_text_of(words));
+        return;
+    }
+    const double value = kent_units_shown(c->kind, row->units, c->number(row));
+    if (isfinite(value)) kent_text_add(out, "%.8g", value);
+}
+
+kent_status kent_report_summary_csv(const kent_results *r, const kent_report_options *o,
+                                    kent_sink sink)
+{
+    kent_text out = {0}, words = {0};
+    kent_status status = KENT_OK;
+    for (size_t c = 0; c < COLUMN_COUNT; c++) {
+        if (c > 0) kent_text_add(&out, ",");
+        add_heading(&COLUMNS[c], o->units, &out);
+    }
+    kent_text_add(&out, "\n");
+    for (size_t i = 0; !status && i < r->model->fitting_count; i++) {
+        const kent_row row = row_of(r, o->units, i);
+        for (size_t c = 0; c < COLUMN_COUNT; c++) {
+            if (c > 0) kent_text_add(&out, ",");
+            add_field(&row, &COLUMNS[c], &words, &out);
+        }
+        kent_text_add(&out, "\n");
+        status = words.failed ? KENT_E_NOMEM : kent_sink_flush(sink, &out);
+    }
+    if (!status) status = kent_sink_flush(sink, &out);
+    kent_text_clear(&words);
+    kent_text_clear(&out);
+    return status;
+}
+
+/* ---- as the last table of --wide --------------------------------------------------
+ */
+
+static void add_cell(const kent_row *row, const kent_summary_column *c,
+                     kent_text *words, kent_table *t)
+{
+    if (c->number) {
+        kent_table_cell(t, "%s",
+                        kent_shown_quantity(c->kind, row->units, c->number(row)).text);
+        return;
+    }
+    kent_text_reset(words);
+    c->words(row, words);
+    const char *said = kent_text_of(words);
+    kent_table_cell(t, "%s", said[0] != '\0' ? said : KENT_SHOWN_NONE);
+}
+
+void kent_summary_table(const kent_results *r, const kent_report_options *o,
+                        const size_t *order, kent_text *out)
+{
+    const kent_summary_column *chosen[COLUMN_COUNT];
+    kent_column columns[COLUMN_COUNT];
+    kent_shown units[COLUMN_COUNT];
+    size_t count = 0;
+    kent_text words = {0};
+    for (size_t c = 0; c < COLUMN_COUNT; c++) {
+        if (COLUMNS[c].flags & NARROW) continue;
+        const bool unit = has_unit(&COLUMNS[c], o->units);
+        if (unit) units[count] = kent_shown_unit(COLUMNS[c].kind, o->units);
+        columns[count] = (kent_column){.head = COLUMNS[c].head,
+                                       .unit = unit ? units[count].text : "",
+                                       .align = COLUMNS[c].number ? KENT_ALIGN_RIGHT
+                                                                  : KENT_ALIGN_LEFT};
+        chosen[count++] = &COLUMNS[c];
+    }
+    kent_table t = {.columns = columns, .column_count = count};
+    for (size_t i = 0; i < r->model->fitting_count; i++) {
+        const kent_row row = row_of(r, o->units, order[i]);
+        for (size_t c = 0; c < count; c++)
+            add_cell(&row, chosen[c], &words, &t);
+    }
+    (void)kent_table_print(&t, 0, out);
+    out->failed = out->failed || words.failed;
+    kent_table_clear(&t);
+    kent_text_clear(&words);
+}

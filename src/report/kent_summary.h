@@ -1,0 +1,16 @@
+/* Inside report/ only: one row per fitting, every column once. summary.csv and the last
+ * table of --wide both walk the same list of columns. */
+#ifndef KENT_SUMMARY_H
+#define KENT_SUMMARY_H
+
+#include "kent_report.h"
+
+/* The columns that the narrow table does not have, as an aligned table. order:
+ * [fitting_count] the fittings in the order of the rows. */
+void kent_summary_table(const kent_results *r, const kent_report_options *o,
+                        const size_t *order, kent_text *out);
+
+/* A field of RFC 4180: quoted where it holds a comma, a quote or a line break. */
+void kent_summary_field(kent_text *out, const char *text);
+
+#endif
