@@ -49,8 +49,9 @@ static void suction_pulls_every_one_the_other_way(void **state)
                               kent_build_port(EAST, 7e5 + 1e4 * k, 0.0, 0.3),
                               kent_build_port(NORTH, 8e5, 0.0, 0.1 + 0.01 * k)};
         const kent_vec3 push = balance_of(ports, 3).thrust;
-        for (size_t i = 0; i < 3; i++)
+        for (size_t i = 0; i < 3; i++) {
             ports[i].pressure = -ports[i].pressure;
+        }
         const kent_vec3 pull = balance_of(ports, 3).thrust;
         assert_true(push.x == -pull.x && push.y == -pull.y);
     }

@@ -71,7 +71,7 @@ static double value_of(const kent_derivation *d, const char *symbol)
 {
     const kent_line *line = kent_derivation_find(d, symbol);
     if (!line) fail_msg("there is no line \"%s\"", symbol);
-    return line->value;
+    return line ? line->value : (double)NAN;
 }
 
 static void assert_ends_as_used(const kent_derivation *d, kent_vec3 thrust)
@@ -131,6 +131,7 @@ static void the_check_line_gives_the_resultant(void **state)
     /* and hold for what lies in line: T between B and X, E beyond X */
     b.model->points[3].at = (kent_vec3){505.5, -108.0, 11.05};
     b.model->points[6].at = (kent_vec3){707.25, -397.5, 8.575};
+    b.model->points[1].at = (kent_vec3){185.5, 42.5, 22.0}; /* V midway to B */
     kent_net n = kent_net_of(b);
     take_surge(&n);
     kent_net_finish(&n);

@@ -43,8 +43,9 @@ static void a_bend_inside_a_span_is_watched_once(void **state)
         const kent_watch *w = &n.watches[i];
         const bool at_p1 = fabs(w->chainage - 500.0) < 1e-9;
         const bool at_p2 = fabs(w->chainage - 800.0) < 1e-9;
-        if (w->span == kent_build_span_of(&n.build, "A") && (at_p1 || at_p2))
+        if (w->span == kent_build_span_of(&n.build, "A") && (at_p1 || at_p2)) {
             at_bends++;
+        }
     }
     assert_int_equal(at_bends, 2);
     kent_net_clear(&n);
@@ -127,8 +128,9 @@ static kent_vec3 thrust_at(const kent_net *n, const kent_fitting *f, const kent_
     for (size_t i = 0; i < f->port_count; i++) {
         for (size_t w = 0; w < n->watch_count; w++) {
             const kent_watch *at = &n->watches[w];
-            if (at->span != ports[i].span || at->chainage != ports[i].chainage)
+            if (at->span != ports[i].span || at->chainage != ports[i].chainage) {
                 continue;
+            }
             head[i] = t->head[row * n->watch_count + w];
             b.port[i].flow = ports[i].sign * t->flow[row * n->watch_count + w];
             break;
