@@ -14,14 +14,14 @@ static const double LEAST_TURN = 1e-6;
 static const double SAME_PLACE = 1e-6;
 
 static const kent_leg_rule RULES[] = {
-    {KENT_BEND, 0, 2, true, false, "on each leg"},
-    {KENT_TEE, 2, KENT_PORTS, false, false, "on the branch"},
-    {KENT_WYE, 2, KENT_PORTS, false, false, "on the branch"},
-    {KENT_CROSS, 2, KENT_PORTS, false, false, "on each branch"},
-    {KENT_REDUCER, 0, 2, false, true, "on either leg alone"},
-    {KENT_DEAD_END, 0, 1, false, false, "behind the end"},
-    {KENT_VALVE, 0, 2, false, false, "on both sides, for a push from either"},
-    {KENT_STRAIGHT, 0, 0, false, false, "nowhere"},
+    {0, 2, "on each leg", KENT_BEND, true, false},
+    {2, KENT_PORTS, "on the branch", KENT_TEE, false, false},
+    {2, KENT_PORTS, "on the branch", KENT_WYE, false, false},
+    {2, KENT_PORTS, "on each branch", KENT_CROSS, false, false},
+    {0, 2, "on either leg alone", KENT_REDUCER, false, true},
+    {0, 1, "behind the end", KENT_DEAD_END, false, false},
+    {0, 2, "on both sides, for a push from either", KENT_VALVE, false, false},
+    {0, 0, "nowhere", KENT_STRAIGHT, false, false},
 };
 
 const kent_leg_rule *kent_leg_rule_of(kent_fitting_type type)
@@ -144,9 +144,7 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
         out->force = push;
         out->length = kent_restrained_length_end(push, factor, out->friction);
     }
-    if (!(out->length >= 0.0) || isinf(out->length))
-        return KENT_LACK_SOIL; /* no grip */
-    return 0;
+    return isfinite(out->length) ? 0 : KENT_LACK_GRIP;
 }
 
 /* ---- how far it may run

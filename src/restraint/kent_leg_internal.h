@@ -30,7 +30,8 @@ typedef enum kent_lack {
     KENT_LACK_COVER = 64,
     KENT_LACK_PIPE_MASS = 128,
     KENT_LACK_SOIL = 256, /* not stated, or cannot be relied on */
-    KENT_LACK_PIPE = 512  /* the leg is no pipe of the network */
+    KENT_LACK_PIPE = 512, /* the leg is no pipe of the network */
+    KENT_LACK_GRIP = 1024 /* the values given make no friction at all */
 } kent_lack;
 
 /* Everything that gives one leg's length, kept for the hand calculation. */
@@ -53,11 +54,11 @@ typedef struct kent_leg_work {
 
 /* How the legs of one type of fitting are restrained. */
 typedef struct kent_leg_rule {
-    kent_fitting_type type;
     size_t first, count; /* ports that are legs; count is an upper bound */
+    const char *says;    /* where, as the end of a sentence */
+    kent_fitting_type type;
     bool bend;
     bool either; /* one leg alone is enough */
-    const char *says;
 } kent_leg_rule;
 
 const kent_leg_rule *kent_leg_rule_of(kent_fitting_type type);

@@ -149,6 +149,12 @@ static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
                        "give its pipe_class, or "
                        "its material and wall_thickness");
     }
+    if (w->lack & KENT_LACK_GRIP) {
+        kent_notes_add(notes,
+                       "no restrained length: soil '%s' as given makes no friction "
+                       "on the pipe",
+                       w->soil->id);
+    }
     if (w->lack & KENT_LACK_PIPE) {
         kent_notes_add(notes, "no restrained length: this fitting stands in no pipe of "
                               "the case");

@@ -434,6 +434,22 @@ static void adhesion_is_not_asked_for_where_there_is_no_cohesion(void **state)
     assert_true(isnan(length_at_c(&sticky)) != 0);
 }
 
+static void soil_without_any_friction_gives_no_length(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    b.model->soils[0].friction_angle = 0.0;
+    b.model->soils[0].passive_ratio = 0.0;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = holding_of(&b, r, "C");
+
+    assert_int_equal(h->leg_count, 0);
+    assert_true(isnan(h->restrained_length) != 0);
+    kent_hand_expect(h, "makes no friction on the pipe");
+    finish(&b, r);
+}
+
 /* A tee of the same main at T, 10 m from the bend, whose length is longer. */
 static void a_length_that_meets_a_tee_does_not_fit(void **state)
 {
@@ -554,6 +570,7 @@ int main(void)
         cmocka_unit_test(sleeves_ground_water_and_crests_take_longer_lengths),
         cmocka_unit_test(missing_soil_values_are_named_and_no_length_is_given),
         cmocka_unit_test(adhesion_is_not_asked_for_where_there_is_no_cohesion),
+        cmocka_unit_test(soil_without_any_friction_gives_no_length),
         cmocka_unit_test(a_length_that_meets_a_tee_does_not_fit),
         cmocka_unit_test(a_length_that_runs_into_peat_does_not_fit),
         cmocka_unit_test(a_dead_end_is_held_by_friction_alone),
