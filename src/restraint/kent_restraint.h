@@ -93,12 +93,13 @@ typedef struct kent_leg { /* restrained length of one port */
     size_t port;          /* 0 .. port_count - 1 */
     double length;        /* m, as computed */
     int pipes;            /* whole pipes; 0 where no pipe length is known */
-    bool fits;            /* it ends before the next fitting that breaks it */
+    bool fits;            /* whole pipes end before what breaks them (11) */
 } kent_leg;
 
 typedef struct kent_holding {
     int governing;    /* index into the fitting's load cases; -1: no thrust at all */
-    kent_sense sense; /* sideways, upward or downward: whichever uses most */
+    kent_sense sense; /* sideways, upward or downward: whichever uses most; the whole
+                         (KENT_RESULTANT) where restrained joints are chosen */
     int runner_up;    /* the next case; -1 */
     double runner_up_load;     /* N, its factored load in the same sense */
     int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
@@ -118,8 +119,8 @@ typedef struct kent_holding {
 typedef struct kent_restraints {
     kent_holding *fittings; /* [fitting_count] */
     size_t fitting_count;
-    double concrete; /* m3 in all */
-    size_t not_held;
+    double concrete; /* m3 in all, faces of their own included */
+    size_t not_held; /* of those that should be: not where none was asked or needed */
 } kent_restraints;
 
 kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,
