@@ -28,6 +28,7 @@ double kent_swamee_jain(double reynolds, double relative_roughness);
 
 /* Darcy factor at a speed (m/s, either sign). Never below the laminar 64/Re, so that
  * the loss has the laminar slope at rest whatever the law; 0 for KENT_FRICTIONLESS.
+ * At rest it is that of Re 1e-9: large, and finite.
  * Uses no libm but sqrt (kent_log, kent_pow), so that marching gives the same bits
  * everywhere. */
 double kent_friction_factor(const kent_friction *friction, double speed);

@@ -6,7 +6,7 @@
 const double KENT_WATER_COLDEST = 273.15;
 const double KENT_WATER_HOTTEST = 373.15;
 
-/* IAPWS SR6-08(2011), tables 1 and 2. Temperatures enter as 10 K/(593 K - T) and
+/* Coefficients of IAPWS SR6-08(2011). Temperatures enter as 10 K/(593 K - T) and
  * 10 K/(T - 232 K); pressures are about p0 = 0.1 MPa. */
 static const double GAS_CONSTANT = 461.51805; /* J/(kg K) */
 static const double REFERENCE = 10.0;         /* K */
@@ -90,7 +90,7 @@ static double saturation_pressure(double temperature)
     return 1e6 * root * root * root * root;
 }
 
-/* Pa s. source IAPWS SR6-08(2011), eq. 7: 01.5 */
+/* Pa s. source IAPWS SR6-08(2011): 01.5 */
 static double viscosity_at(double temperature)
 {
     const double t = temperature / 300.0;
