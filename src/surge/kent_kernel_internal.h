@@ -51,20 +51,20 @@ kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
                  double *restrict p, double *restrict m, double *restrict highest,
                  double *restrict lowest)
 {
-    int64_t beyond = 0;
+    int64_t within = 0;
     for (size_t i = 0; i < n; i++) {
         const double twice_head = p[i] + m[i];
         const double d = p[i] - m[i];
         const double kd = k[i] * fabs(d);
         const double drag = implicit ? kd * d / (1.0 + 2.0 * kd) : kd * d;
         const double f = kd <= limit ? drag : 0.0;
-        beyond += kd <= limit ? 0 : 1; /* NaN counts too */
+        within += kd <= limit ? 1 : 0; /* NaN is not */
         highest[i] = twice_head > highest[i] ? twice_head : highest[i];
         lowest[i] = twice_head < lowest[i] ? twice_head : lowest[i];
         p[i] -= f;
         m[i] += f;
     }
-    return beyond;
+    return (int64_t)n - within;
 }
 
 #endif

@@ -20,6 +20,7 @@ typedef struct kent_waves {
     double *twice_highest, *twice_lowest; /* [node_total] m */
     double *p, *m;                        /* [node_total] m, inside their stores */
     double *p_store, *m_store;            /* [node_total + slack] */
+    double *pool;                         /* all of the above: one block of memory */
     size_t slack;
 } kent_waves;
 

@@ -13,7 +13,7 @@ enum { RUNS = 9, STEPS = 2000, BLOCK = 250 };
 static double seconds(void)
 {
     struct timespec t;
-    (void)clock_gettime(CLOCK_MONOTONIC, &t);
+    (void)clock_gettime(CLOCK_PROCESS_CPUTIME_ID, &t);
     return (double)t.tv_sec + 1e-9 * (double)t.tv_nsec;
 }
 

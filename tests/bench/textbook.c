@@ -12,19 +12,29 @@ typedef struct node {
 typedef struct line { /* one span */
     node *nodes;      /* [reaches + 1] */
     size_t reaches;
-    double b; /* s/m2 */
-    double r; /* s2/m5, of one reach */
+    double b;    /* s/m2 */
+    double r;    /* s2/m5, of one reach */
+    double c[2]; /* m, the characteristics that reach its start and end */
 } line;
 
 struct textbook {
     const kent_model *model;
     const kent_steady *steady;
     const kent_grid *grid;
-    int scenario;
     bool follow;
     size_t step;
-    line *lines; /* [span_count] */
+    line *lines;              /* [span_count] */
+    const kent_event **moves; /* [valve_count] the ramp of each valve, or NULL */
 };
+
+/* m3/s whose friction factor a span keeps: the steady one's, or of 1 m/s at rest. */
+static double lasting_flow(const kent_model *m, const kent_steady *s, size_t span)
+{
+    double derivative = 0.0;
+    const double q = s->span_flow[span];
+    const double loss = kent_span_loss(m, &m->spans[span], q, &derivative);
+    return fabs(loss) < 1e-10 ? m->spans[span].area : q;
+}
 
 static double reach_resistance(const textbook *t, size_t span, double flow)
 {
@@ -39,15 +49,20 @@ textbook *textbook_new(const kent_model *m, const kent_steady *s, const kent_gri
 {
     textbook *t = calloc(1, sizeof *t);
     if (!t) return NULL;
-    *t = (textbook){m, s, grid, scenario, follow, 0, NULL};
+    *t = (textbook){m, s, grid, follow, 0, NULL, NULL};
     t->lines = calloc(m->span_count, sizeof *t->lines);
-    if (!t->lines) goto fail;
+    t->moves = calloc(m->valve_count + 1, sizeof *t->moves);
+    if (!t->lines || !t->moves) goto fail;
+    for (size_t i = 0; scenario >= 0 && i < m->scenarios[scenario].event_count; i++) {
+        const kent_event *e = &m->events[m->scenarios[scenario].event_first + i];
+        if (e->kind == KENT_EVENT_VALVE) t->moves[e->target] = e;
+    }
     for (size_t i = 0; i < m->span_count; i++) {
         const kent_span *span = &m->spans[i];
         line *l = &t->lines[i];
         l->reaches = (size_t)grid->reaches[i];
         l->b = grid->wave_speed_used[i] / (m->gravity * span->area);
-        l->r = reach_resistance(t, i, s->span_flow[i]);
+        l->r = reach_resistance(t, i, lasting_flow(m, s, i));
         l->nodes = calloc(l->reaches + 1, sizeof *l->nodes);
         if (!l->nodes) goto fail;
         const double start = s->node_head[span->node[0]];
@@ -72,6 +87,7 @@ void textbook_free(textbook *t)
         free(t->lines[i].nodes);
     }
     free(t->lines);
+    free(t->moves);
     free(t);
 }
 
@@ -91,9 +107,10 @@ static void gather(const textbook *t, const kent_node *at, double *sum_b, double
     *sum_b = *sum_c = 0.0;
     for (size_t i = 0; i < at->end_count; i++) {
         const kent_end *end = &t->model->ends[at->end_first + i];
-        const line *l = &t->lines[end->span];
+        line *l = &t->lines[end->span];
+        l->c[end->side] = arriving(t, l, end->side);
         *sum_b += 1.0 / l->b;
-        *sum_c += arriving(t, l, end->side) / l->b;
+        *sum_c += l->c[end->side] / l->b;
     }
 }
 
@@ -102,7 +119,7 @@ static void set_ends(textbook *t, const kent_node *at, double head)
     for (size_t i = 0; i < at->end_count; i++) {
         const kent_end *end = &t->model->ends[at->end_first + i];
         line *l = &t->lines[end->span];
-        const double into = (arriving(t, l, end->side) - head) / l->b;
+        const double into = (l->c[end->side] - head) / l->b;
         node *n = end->side == 0 ? &l->nodes[0] : &l->nodes[l->reaches];
         n->next_head = head;
         n->next_flow = end->side == 0 ? -into : into;
@@ -114,29 +131,30 @@ static double capacity_now(const textbook *t, int valve)
     const kent_model *m = t->model;
     const kent_valve *v = &m->valves[valve];
     const double time = (double)t->step * t->grid->step;
+    const kent_event *move = t->moves[valve];
     double opening = v->opening;
-    if (t->scenario >= 0) {
-        const kent_scenario *s = &m->scenarios[t->scenario];
-        for (size_t i = 0; i < s->event_count; i++) {
-            const kent_event *e = &m->events[s->event_first + i];
-            if (e->kind != KENT_EVENT_VALVE || e->target != valve) continue;
-            const double share = (time - e->start_time) / e->ramp_time;
-            if (share >= 1.0) {
-                opening = e->to;
-            } else if (share > 0.0) {
-                opening += (e->to - opening) * share;
-            }
+    if (move) {
+        const double share = (time - move->start_time) / move->ramp_time;
+        if (share >= 1.0) {
+            opening = move->to;
+        } else if (share > 0.0) {
+            opening += (move->to - opening) * share;
         }
     }
     return t->steady->valve_capacity[valve] *
            kent_valve_relative_capacity(&v->curve, opening);
 }
 
+/* Positive root of a Q^2 + b Q = c (a, b, c >= 0), without cancellation. */
+static double positive_root(double a, double b, double c)
+{
+    return c > 0.0 ? 2.0 * c / (b + sqrt(b * b + 4.0 * a * c)) : 0.0;
+}
+
 static double valve_flow(double capacity, double drop, double impedance)
 {
-    /* Q^2 + E^2 B Q - E^2 drop = 0 for drop > 0 */
-    const double half = 0.5 * capacity * capacity * impedance;
-    const double q = -half + sqrt(half * half + capacity * capacity * fabs(drop));
+    if (capacity <= 0.0) return 0.0;
+    const double q = positive_root(1.0 / (capacity * capacity), impedance, fabs(drop));
     return drop < 0.0 ? -q : q;
 }
 
@@ -171,8 +189,7 @@ static void solve_level(textbook *t, const kent_node *at)
     }
     if (head > c / b) { /* flows out: k Q^2 + Q/b - (level - c/b) = 0 */
         const double k = (1.0 + f->loss) / (2.0 * m->gravity * area * area);
-        const double q =
-            (-1.0 / b + sqrt(1.0 / (b * b) + 4.0 * k * (head - c / b))) / (2.0 * k);
+        const double q = positive_root(k, 1.0 / b, head - c / b);
         head -= k * q * q;
     }
     set_ends(t, at, head);

@@ -12,9 +12,9 @@
 
 typedef struct textbook textbook;
 
-/* Scenario events must be single ramps of valves that start after t = 0. follow: the
- * friction factor of every node at every step from its own flow; else of the steady
- * state. NULL: no memory. m, s and grid must outlive it. */
+/* The scenario's events must be ramps of valves, one for each, that start after t = 0.
+ * follow: the friction factor of every node at every step from its own flow; else of
+ * the steady state. NULL: no memory. m, s and grid must outlive it. */
 textbook *textbook_new(const kent_model *m, const kent_steady *s, const kent_grid *grid,
                        int scenario, bool follow);
 void textbook_free(textbook *t);
