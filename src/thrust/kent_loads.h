@@ -53,7 +53,7 @@ typedef struct kent_loads_result {
 typedef struct kent_recorder kent_recorder;
 
 /* For one model and its steady state, which must outlive it; pass every scenario
- * through it, in any order. Per fitting and scenario it keeps about 4 kB, however many
+ * through it, in any order. Per fitting and scenario it keeps about 3 kB, however many
  * steps. */
 kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
                               kent_recorder **out, kent_error *err);
