@@ -18,7 +18,7 @@ STANDARD = {"assert.h", "ctype.h", "errno.h", "float.h", "inttypes.h", "limits.h
 # What else a folder may see.
 OUTSIDE = {
     "base": {"pthread.h", "stdatomic.h", "unistd.h", "fcntl.h", "dirent.h",
-             "sys/stat.h", "sys/types.h", "linux/fs.h", "ftw.h", "signal.h"},
+             "sys/file.h", "sys/stat.h", "fts.h"},
     "units": {"udunits2.h", "locale.h"},
     "casefile": {"libconfig.h", "locale.h", "sys/stat.h", "unistd.h", "dirent.h"},
     "steady": {"kinsol/kinsol.h", "nvector/nvector_serial.h", "klu.h",
@@ -28,7 +28,7 @@ OUTSIDE = {
                "sunmatrix/sunmatrix_sparse.h"},
     "job": {"unistd.h"},
     "report": {"jansson.h"},
-    "app": {"argp.h", "locale.h", "unistd.h", "signal.h", "sys/types.h", "sys/stat.h"},
+    "app": {"argp.h", "locale.h", "unistd.h", "signal.h", "fcntl.h", "stdio_ext.h"},
 }
 
 INCLUDE = re.compile(r'^\s*#\s*include\s+([<"])([^>"]+)[>"]', re.M)
