@@ -149,8 +149,9 @@ static kent_exit choose_scenarios(session *s)
         code = fail(s, kent_error_nomem(&s->error));
         goto done;
     }
-    for (size_t i = 0; i < count; i++)
+    for (size_t i = 0; i < count; i++) {
         names[i] = s->model->scenarios[i].id;
+    }
     for (size_t i = 0; i < o->scenario_count; i++) {
         const int found = find_name(o->scenarios[i], names, count);
         if (found < 0) {
@@ -173,8 +174,9 @@ static kent_exit find_fitting(const session *s, int *fitting)
         say_error(&s->error, KENT_E_NOMEM);
         return KENT_EXIT_FAILED;
     }
-    for (size_t i = 0; i < m->fitting_count; i++)
+    for (size_t i = 0; i < m->fitting_count; i++) {
         names[i] = m->fittings[i].id;
+    }
     *fitting = find_name(s->options->fitting, names, m->fitting_count);
     if (*fitting < 0) {
         say_unknown("fitting", s->options->fitting, names, m->fitting_count);

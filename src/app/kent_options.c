@@ -28,19 +28,18 @@ enum {
 };
 
 typedef struct command_row {
-    const char *word;
-    kent_command command;
+    const char *word, *wants;
     size_t least, most; /* words after it */
-    const char *wants;
+    kent_command command;
     unsigned options;
 } command_row;
 
 static const command_row COMMANDS[] = {
-    {"run", KENT_RUN, 1, 1, "one CASE", GAVE_ALL},
-    {"check", KENT_CHECK, 1, 1, "one CASE", GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
-    {"explain", KENT_EXPLAIN, 2, 2, "a CASE and a FITTING",
+    {"run", "one CASE", 1, 1, KENT_RUN, GAVE_ALL},
+    {"check", "one CASE", 1, 1, KENT_CHECK, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
+    {"explain", "a CASE and a FITTING", 2, 2, KENT_EXPLAIN,
      GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
-    {"catalogue", KENT_CATALOGUE_LIST, 0, 1, "at most one word",
+    {"catalogue", "at most one word", 0, 1, KENT_CATALOGUE_LIST,
      GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
 };
 enum { COMMAND_COUNT = sizeof COMMANDS / sizeof COMMANDS[0] };

@@ -74,8 +74,9 @@ kent_pressures kent_pressures_of(const kent_results *r, size_t fitting)
                         .governs = -1,
                         .highest_in = -1,
                         .lowest_in = -1};
-    for (size_t k = 0; k < KENT_PRESSURES; k++)
+    for (size_t k = 0; k < KENT_PRESSURES; k++) {
         p.at[k] = NAN;
+    }
     for (size_t c = 0; c < loads->count; c++) {
         const kent_load_case *load = &loads->cases[c];
         for (size_t k = 0; k < sizeof NAMED / sizeof NAMED[0]; k++) {
@@ -136,8 +137,9 @@ kent_extreme kent_extreme_lowest(const kent_results *r, size_t scenario)
 
 void kent_point_steady_heads(const kent_model *m, const kent_steady *s, double *head)
 {
-    for (size_t p = 0; p < m->point_count; p++)
+    for (size_t p = 0; p < m->point_count; p++) {
         head[p] = NAN;
+    }
     for (size_t i = 0; i < m->span_count; i++) {
         const kent_span *span = &m->spans[i];
         for (size_t k = 0; k < span->route_count; k++) {

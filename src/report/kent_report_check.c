@@ -97,8 +97,9 @@ static void print_points(const kent_view *v)
         v->out->failed = true;
         return;
     }
-    for (size_t i = 0; i < m->point_count; i++)
+    for (size_t i = 0; i < m->point_count; i++) {
         head[i] = NAN;
+    }
     if (v->steady) kent_point_steady_heads(m, v->steady, head);
     for (size_t i = 0; i < m->point_count; i++) {
         const kent_point *p = &m->points[i];

@@ -136,8 +136,9 @@ static void print_geometry(const kent_sheet *s)
     kent_derivation_put(&d, "x0", f->at.x, KENT_LENGTH, KENT_GIVEN, "x of the fitting");
     kent_derivation_put(&d, "y0", f->at.y, KENT_LENGTH, KENT_GIVEN, "y of the fitting");
     kent_derivation_put(&d, "z0", f->at.z, KENT_LENGTH, KENT_GIVEN, "z of the fitting");
-    for (size_t i = 0; i < f->port_count; i++)
+    for (size_t i = 0; i < f->port_count; i++) {
         derive_leg(s, i, &d);
+    }
     if (f->type == KENT_BEND && f->port_count == 2) {
         kent_derivation_heading(&d, "Turn in space");
         derive_angle(s, 0, 1, "turn of the bend in space", &d);
@@ -196,8 +197,9 @@ static void print_cases(const kent_sheet *s)
     kent_table t = {.columns = columns,
                     .column_count = sizeof columns / sizeof columns[0]};
     kent_text_add(s->out, "\nLoad cases, each at the instant of its largest thrust\n");
-    for (size_t i = 0; i < s->loads->count; i++)
+    for (size_t i = 0; i < s->loads->count; i++) {
         case_row(s, i, &t);
+    }
     (void)kent_table_print(&t, s->limit, s->out);
     kent_table_clear(&t);
     if (s->holding->governing >= 0) {

@@ -131,8 +131,9 @@ static json_t *vector(kent_vec3 v)
 static json_t *notes_of(const kent_notes *notes)
 {
     kent_object list = list_new();
-    for (size_t i = 0; i < notes->count; i++)
+    for (size_t i = 0; i < notes->count; i++) {
         append(&list, words(notes->text[i]));
+    }
     return object_done(list);
 }
 

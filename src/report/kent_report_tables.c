@@ -33,8 +33,9 @@ static void letter_of(size_t index, char out[4])
     for (size_t n = index + 1; n > 0 && length < 3; n = (n - 1) / 26) {
         backwards[length++] = (char)('a' + (n - 1) % 26);
     }
-    for (size_t i = 0; i < length; i++)
+    for (size_t i = 0; i < length; i++) {
         out[i] = backwards[length - 1 - i];
+    }
     out[length] = '\0';
 }
 
@@ -124,8 +125,9 @@ static void part_cells(const kent_page *page, size_t i, const kent_part *part,
         kent_units_display(KENT_PRESSURE, units).decimals - 1);
 
     if (again) {
-        for (int blank = 0; blank < 4; blank++)
+        for (int blank = 0; blank < 4; blank++) {
             kent_table_cell(t, "%s", "");
+        }
     } else {
         kent_table_cell(t, "%s", kent_shown_governing(loads, part, room).text);
         kent_table_cell(t, "%s", pressure.text);
@@ -168,8 +170,9 @@ static void fitting_rows(const kent_page *page, size_t i, kent_room room, kent_t
             kent_table_cell(t, "%s", kent_shown_fitting(m, f, page->units, room).text);
             kent_table_cell(t, "%s", kent_shown_size(m, f, page->units).text);
         } else {
-            for (int blank = 0; blank < 4; blank++)
+            for (int blank = 0; blank < 4; blank++) {
                 kent_table_cell(t, "%s", "");
+            }
         }
         const bool again = p > 0 && same_push(loads, &parts[0], &parts[p]);
         part_cells(page, i, &parts[p], again, room, t);
@@ -469,8 +472,9 @@ static void print_scenarios(kent_page *page)
 {
     const size_t count = page->results->scenario_count;
     kent_text_add(page->out, "\n");
-    for (size_t i = 0; i < count; i++)
+    for (size_t i = 0; i < count; i++) {
         print_scenario(page, i);
+    }
     print_overall(page);
     if (count == 0 && page->model->span_count > 0) {
         kent_text_add(page->out,

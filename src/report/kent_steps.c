@@ -67,8 +67,9 @@ static void print_input(const kent_line *line, kent_system system, size_t limit,
     kent_text left = {0}, right = {0};
     kent_line_value(line, system, value, sizeof value);
     kent_text_add(&left, "  %s = %s", line->symbol, value);
-    while (!left.failed && left.length + 3 < VALUE_COLUMN)
+    while (!left.failed && left.length + 3 < VALUE_COLUMN) {
         kent_text_add(&left, " ");
+    }
     kent_text_add(&right, "%s%s(%s)", line->says, line->says[0] != '\0' ? " " : "",
                   source_words(line->source));
     kent_text_add(out, "%s", kent_text_of(&left));

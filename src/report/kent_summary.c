@@ -270,64 +270,64 @@ enum {
 
 typedef struct kent_summary_column {
     const char *head;
-    kent_kind kind;
     double (*number)(const kent_row *row); /* SI; NULL: words */
     void (*words)(const kent_row *row, kent_text *out);
+    kent_kind kind;
     unsigned flags;
 } kent_summary_column;
 
 static const kent_summary_column COLUMNS[] = {
-    {"station", KENT_LENGTH, station, NULL, NARROW},
-    {"point", KENT_RATIO, NULL, point, 0},
-    {"fitting", KENT_RATIO, NULL, type, NARROW},
-    {"angle", KENT_ANGLE, angle, NULL, NARROW},
-    {"orientation", KENT_RATIO, NULL, orientation, NARROW},
-    {"bore", KENT_DIAMETER, size, NULL, NARROW},
-    {"other bore", KENT_DIAMETER, branch, NULL, NARROW},
-    {"load case", KENT_RATIO, NULL, load_case, NARROW},
-    {"scenario", KENT_RATIO, NULL, scenario, NARROW},
-    {"time", KENT_TIME, time_at, NULL, NARROW},
-    {"pressure", KENT_PRESSURE, pressure, NULL, NARROW},
-    {"thrust", KENT_FORCE, whole, NULL, NARROW},
-    {"pushes", KENT_RATIO, NULL, pushes, NARROW},
-    {"restraint", KENT_RATIO, NULL, restraint, NARROW},
-    {"held", KENT_RATIO, NULL, held, NARROW},
-    {"block", KENT_RATIO, NULL, block_type, NARROW},
-    {"width", KENT_LENGTH, block_width, NULL, NARROW},
-    {"height", KENT_LENGTH, block_height, NULL, NARROW},
-    {"thickness", KENT_LENGTH, block_thickness, NULL, NARROW},
-    {"volume", KENT_VOLUME, block_volume, NULL, NARROW},
-    {"factor reached", KENT_RATIO, reached, NULL, NARROW},
-    {"load over resistance", KENT_RATIO, used, NULL, NARROW},
-    {"factor asked", KENT_RATIO, asked, NULL, 0},
-    {"factored thrust", KENT_FORCE, design, NULL, 0},
-    {"thrust east", KENT_FORCE, thrust_x, NULL, 0},
-    {"thrust north", KENT_FORCE, thrust_y, NULL, 0},
-    {"thrust up", KENT_FORCE, thrust_z, NULL, 0},
-    {"horizontal", KENT_FORCE, across, NULL, 0},
-    {"azimuth", KENT_ANGLE, azimuth, NULL, 0},
-    {"largest seal diameter", KENT_DIAMETER, highest_seal, NULL, 0},
-    {"seal diameters", KENT_DIAMETER, NULL, seals, UNITED},
-    {"steady pressure", KENT_PRESSURE, steady, NULL, NARROW},
-    {"static pressure", KENT_PRESSURE, static_of, NULL, NARROW},
-    {"test pressure", KENT_PRESSURE, test, NULL, NARROW},
-    {"highest pressure", KENT_PRESSURE, highest, NULL, NARROW},
-    {"highest in", KENT_RATIO, NULL, highest_in, 0},
-    {"lowest pressure", KENT_PRESSURE, lowest, NULL, NARROW},
-    {"lowest in", KENT_RATIO, NULL, lowest_in, 0},
-    {"rating", KENT_PRESSURE, rating, NULL, NARROW},
-    {"runner-up", KENT_RATIO, NULL, runner_up_case, 0},
-    {"runner-up factored thrust", KENT_FORCE, runner_up, NULL, 0},
-    {"soil", KENT_RATIO, NULL, soil, 0},
-    {"cover", KENT_LENGTH, cover, NULL, 0},
-    {"area asked for", KENT_AREA, block_area, NULL, 0},
-    {"bearing pressure", KENT_STRESS, block_bearing, NULL, 0},
-    {"face width", KENT_LENGTH, face_width, NULL, 0},
-    {"face height", KENT_LENGTH, face_height, NULL, 0},
-    {"face thickness", KENT_LENGTH, face_thickness, NULL, 0},
-    {"face volume", KENT_VOLUME, face_volume, NULL, 0},
-    {"restrained length", KENT_LENGTH, joints, NULL, 0},
-    {"cautions", KENT_RATIO, NULL, cautions, NARROW},
+    {"station", station, NULL, KENT_LENGTH, NARROW},
+    {"point", NULL, point, KENT_RATIO, 0},
+    {"fitting", NULL, type, KENT_RATIO, NARROW},
+    {"angle", angle, NULL, KENT_ANGLE, NARROW},
+    {"orientation", NULL, orientation, KENT_RATIO, NARROW},
+    {"bore", size, NULL, KENT_DIAMETER, NARROW},
+    {"other bore", branch, NULL, KENT_DIAMETER, NARROW},
+    {"load case", NULL, load_case, KENT_RATIO, NARROW},
+    {"scenario", NULL, scenario, KENT_RATIO, NARROW},
+    {"time", time_at, NULL, KENT_TIME, NARROW},
+    {"pressure", pressure, NULL, KENT_PRESSURE, NARROW},
+    {"thrust", whole, NULL, KENT_FORCE, NARROW},
+    {"pushes", NULL, pushes, KENT_RATIO, NARROW},
+    {"restraint", NULL, restraint, KENT_RATIO, NARROW},
+    {"held", NULL, held, KENT_RATIO, NARROW},
+    {"block", NULL, block_type, KENT_RATIO, NARROW},
+    {"width", block_width, NULL, KENT_LENGTH, NARROW},
+    {"height", block_height, NULL, KENT_LENGTH, NARROW},
+    {"thickness", block_thickness, NULL, KENT_LENGTH, NARROW},
+    {"volume", block_volume, NULL, KENT_VOLUME, NARROW},
+    {"factor reached", reached, NULL, KENT_RATIO, NARROW},
+    {"load over resistance", used, NULL, KENT_RATIO, NARROW},
+    {"factor asked", asked, NULL, KENT_RATIO, 0},
+    {"factored thrust", design, NULL, KENT_FORCE, 0},
+    {"thrust east", thrust_x, NULL, KENT_FORCE, 0},
+    {"thrust north", thrust_y, NULL, KENT_FORCE, 0},
+    {"thrust up", thrust_z, NULL, KENT_FORCE, 0},
+    {"horizontal", across, NULL, KENT_FORCE, 0},
+    {"azimuth", azimuth, NULL, KENT_ANGLE, 0},
+    {"largest seal diameter", highest_seal, NULL, KENT_DIAMETER, 0},
+    {"seal diameters", NULL, seals, KENT_DIAMETER, UNITED},
+    {"steady pressure", steady, NULL, KENT_PRESSURE, NARROW},
+    {"static pressure", static_of, NULL, KENT_PRESSURE, NARROW},
+    {"test pressure", test, NULL, KENT_PRESSURE, NARROW},
+    {"highest pressure", highest, NULL, KENT_PRESSURE, NARROW},
+    {"highest in", NULL, highest_in, KENT_RATIO, 0},
+    {"lowest pressure", lowest, NULL, KENT_PRESSURE, NARROW},
+    {"lowest in", NULL, lowest_in, KENT_RATIO, 0},
+    {"rating", rating, NULL, KENT_PRESSURE, NARROW},
+    {"runner-up", NULL, runner_up_case, KENT_RATIO, 0},
+    {"runner-up factored thrust", runner_up, NULL, KENT_FORCE, 0},
+    {"soil", NULL, soil, KENT_RATIO, 0},
+    {"cover", cover, NULL, KENT_LENGTH, 0},
+    {"area asked for", block_area, NULL, KENT_AREA, 0},
+    {"bearing pressure", block_bearing, NULL, KENT_STRESS, 0},
+    {"face width", face_width, NULL, KENT_LENGTH, 0},
+    {"face height", face_height, NULL, KENT_LENGTH, 0},
+    {"face thickness", face_thickness, NULL, KENT_LENGTH, 0},
+    {"face volume", face_volume, NULL, KENT_VOLUME, 0},
+    {"restrained length", joints, NULL, KENT_LENGTH, 0},
+    {"cautions", NULL, cautions, KENT_RATIO, NARROW},
 };
 enum { COLUMN_COUNT = sizeof COLUMNS / sizeof COLUMNS[0] };
 
@@ -437,8 +437,9 @@ void kent_summary_table(const kent_results *r, const kent_report_options *o,
     kent_table t = {.columns = columns, .column_count = count};
     for (size_t i = 0; i < r->model->fitting_count; i++) {
         const kent_row row = row_of(r, o->units, order[i]);
-        for (size_t c = 0; c < count; c++)
+        for (size_t c = 0; c < count; c++) {
             add_cell(&row, chosen[c], &words, &t);
+        }
     }
     (void)kent_table_print(&t, 0, out);
     out->failed = out->failed || words.failed;

@@ -1,6 +1,7 @@
 #include "kent_table.h"
 #include "kent_alloc.h"
 
+#include <assert.h>
 #include <stdarg.h>
 #include <stdint.h>
 #include <stdio.h>
@@ -79,6 +80,7 @@ void kent_table_cell(kent_table *t, const char *fmt, ...)
 /* Natural width of every column; NULL: no memory. */
 static size_t *widths_of(const kent_table *t)
 {
+    assert(t->column_count > 0);
     size_t *width = kent_alloc(t->column_count, sizeof *width);
     if (!width) return NULL;
     for (size_t c = 0; c < t->column_count; c++) {
@@ -97,8 +99,9 @@ static size_t *widths_of(const kent_table *t)
 static size_t total_of(const size_t *width, size_t count, size_t gap)
 {
     size_t total = count > 0 ? gap * (count - 1) : 0;
-    for (size_t c = 0; c < count; c++)
+    for (size_t c = 0; c < count; c++) {
         total += width[c];
+    }
     return total;
 }
 
@@ -150,8 +153,9 @@ static void add_cell(kent_text *line, const char *words, size_t width, kent_alig
 static void end_line(kent_text *line, kent_text *out)
 {
     size_t length = line->length;
-    while (length > 0 && line->s[length - 1] == ' ')
+    while (length > 0 && line->s[length - 1] == ' ') {
         length--;
+    }
     kent_text_add(out, "%.*s\n", (int)length, kent_text_of(line));
     out->failed = out->failed || line->failed;
     kent_text_reset(line);
@@ -162,6 +166,7 @@ bool kent_table_print(const kent_table *t, size_t limit, kent_text *out)
     bool cut = false, units = false;
     kent_text line = {0};
     size_t gap = 2;
+    assert(t->column_count > 0);
     size_t *width = widths_of(t);
     if (!width || t->failed) {
         out->failed = true;
@@ -196,8 +201,9 @@ done:
 
 void kent_table_clear(kent_table *t)
 {
-    for (size_t i = 0; i < t->cell_count; i++)
+    for (size_t i = 0; i < t->cell_count; i++) {
         free(t->cells[i]);
+    }
     free(t->cells);
     *t = (kent_table){.columns = t->columns, .column_count = t->column_count};
 }
@@ -209,8 +215,9 @@ static size_t line_bytes(const char *s, size_t room)
     const size_t fits = prefix_bytes(s, room);
     size_t bytes = fits;
     if (s[fits] == '\0' || s[fits] == ' ') return fits;
-    while (bytes > 0 && s[bytes] != ' ')
+    while (bytes > 0 && s[bytes] != ' ') {
         bytes--;
+    }
     return bytes > 0 ? bytes : fits > 0 ? fits : code_point_bytes(s);
 }
 
@@ -233,8 +240,9 @@ void kent_table_paragraph(kent_text *out, size_t limit, const char *lead,
         if (s != copy) add_blanks(out, indent);
         kent_text_add(out, "%.*s\n", (int)bytes, s);
         s += bytes;
-        while (*s == ' ')
+        while (*s == ' ') {
             s++;
+        }
     }
     if (words[0] == '\0') kent_text_add(out, "\n");
     free(copy);
