@@ -326,7 +326,8 @@ static void fill_all(kent_filling *f, const char *path)
     fill_ground(f);
     fill_loads(f);
     fill_solver(f);
-    if (f->root.sound && f->model->pipe_count == 0 && f->model->note_count == 0) {
+    if (r->complaints->count == 0 && f->model->pipe_count == 0 &&
+        f->model->note_count == 0) {
         kent_complain(
             r->complaints, kent_tree_file(r->tree, 0), 0,
             "the case has nothing to work on; it needs pipes, or fittings with "

@@ -212,19 +212,20 @@ static void read_classes(kent_reader *r, kent_record *record, standard *s)
     s->class_count = count;
 }
 
-static void add_pipe(kent_reader *r, const standard *s, const double *row,
+/* false: its id would be cut short. */
+static bool add_pipe(kent_reader *r, const standard *s, const double *row,
                      size_t column, kent_catalogue *c)
 {
     const double size = row[0];
     const double wall = row[3 + column] * s->unit;
     kent_pipe_class *p = grown(r, (void **)&c->pipes, &c->pipe_count, sizeof *p);
-    if (!p) return;
+    if (!p) return true; /* the reader knows */
     *p = s->common;
     const int length = snprintf(p->id, sizeof p->id, "%s-%s-%s%g%s", s->id,
                                 s->classes[column], s->before, size, s->after);
     if (length >= (int)sizeof p->id) {
-        c->pipe_count--; /* an id cut short names nothing */
-        return;
+        c->pipe_count--;
+        return false;
     }
     p->outside_diameter = row[1] * s->unit;
     p->lining = row[2] * s->unit;
@@ -232,6 +233,7 @@ static void add_pipe(kent_reader *r, const standard *s, const double *row,
     p->wall = s->walls_are_minimum ? wall + s->tolerance + s->per_size * size * s->unit
                                    : wall;
     p->pressure_rating = s->ratings[column];
+    return true;
 }
 
 static void add_row(kent_reader *r, kent_record *record, const standard *s,
@@ -240,7 +242,7 @@ static void add_row(kent_reader *r, kent_record *record, const standard *s,
     const kent_twig *twig =
         kent_twig_child(kent_record_field(record, "rows")->twig, index);
     const size_t count = 3 + s->class_count;
-    double row[3 + CLASSES_MOST];
+    double row[3 + CLASSES_MOST] = {0};
     if (kent_twig_type_of(twig) != KENT_TWIG_LIST || kent_twig_count(twig) != count) {
         kent_record_complain(r, record, "rows", "row %zu must hold %zu numbers",
                              index + 1, count);
@@ -256,7 +258,11 @@ static void add_row(kent_reader *r, kent_record *record, const standard *s,
         }
     }
     for (size_t i = 0; i < s->class_count; i++) {
-        if (row[3 + i] > 0.0) add_pipe(r, s, row, i, c);
+        if (row[3 + i] > 0.0 && !add_pipe(r, s, row, i, c)) {
+            kent_record_complain(r, record, "rows", "ids of row %zu are too long",
+                                 index + 1);
+            return;
+        }
     }
 }
 

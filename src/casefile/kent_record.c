@@ -279,6 +279,24 @@ static int word_index(const char *words, const char *word, bool *later)
     return -1;
 }
 
+/* The word of this version nearest to a misspelt one, into out; "": none is near. */
+static void nearest_word(const char *words, const char *word, char *out, size_t size)
+{
+    size_t least = strlen(word) / 3 + 2;
+    out[0] = '\0';
+    for (const char *p = words; p;) {
+        const size_t length = strcspn(p, "|");
+        char candidate[40];
+        (void)snprintf(candidate, sizeof candidate, "%.*s", (int)length, p);
+        const size_t distance = kent_text_distance(candidate, word);
+        if (p[0] != '~' && distance < least) {
+            least = distance;
+            (void)snprintf(out, size, "%s", candidate);
+        }
+        p = p[length] == '|' ? p + length + 1 : NULL;
+    }
+}
+
 /* "push-on", "mechanical" ... : the words of this version, for people. */
 static void list_words(const char *words, char *out, size_t size)
 {
@@ -315,8 +333,16 @@ static void word(kent_reader *r, kent_record *record, const kent_key *key,
         complain(r, record, f->twig, "%s = \"%s\" is not in this version; it knows %s",
                  key->key, f->text, known);
     } else if (f->index < 0) {
-        complain(r, record, f->twig, "%s = \"%.60s\" is not known; it is one of %s",
-                 key->key, f->text, known);
+        char near[40];
+        nearest_word(key->words, f->text, near, sizeof near);
+        if (near[0] != '\0') {
+            complain(r, record, f->twig,
+                     "%s = \"%.60s\" is not known; did you mean \"%s\"?", key->key,
+                     f->text, near);
+        } else {
+            complain(r, record, f->twig, "%s = \"%.60s\" is not known; it is one of %s",
+                     key->key, f->text, known);
+        }
     }
 }
 
@@ -457,6 +483,17 @@ static void read_member(kent_reader *r, kent_record *record, const char *group,
     }
 }
 
+static void complain_missing(kent_reader *r, kent_record *record, const kent_key *key)
+{
+    if (key->value == KENT_VALUE_QUANTITY) {
+        complain(r, record, record->twig,
+                 "'%s' is missing (%s); write for instance %s = \"%s\"", key->key,
+                 key->says, key->key, kent_kind_example(key->kind, r->system));
+    } else {
+        complain(r, record, record->twig, "'%s' is missing (%s)", key->key, key->says);
+    }
+}
+
 void kent_record_read(kent_reader *r, const kent_twig *twig, const char *group,
                       const char *owner, size_t position, kent_record *out)
 {
@@ -476,8 +513,7 @@ void kent_record_read(kent_reader *r, const kent_twig *twig, const char *group,
     for (size_t i = 0; i < out->count; i++) {
         if (kent_key_is_required(&out->keys[i]) && !out->fields[i].twig &&
             !kent_twig_member(twig, out->keys[i].key)) {
-            complain(r, out, twig, "'%s' is missing: %s", out->keys[i].key,
-                     out->keys[i].says);
+            complain_missing(r, out, &out->keys[i]);
         }
     }
 }

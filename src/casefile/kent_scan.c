@@ -373,7 +373,14 @@ static size_t lex_name(scanner *s, const char *p)
     const bool truth = (n == 4 && strncasecmp(p, "true", 4) == 0) ||
                        (n == 5 && strncasecmp(p, "false", 5) == 0);
     const bool inside = s->nest > 0 && s->brackets[s->nest - 1].open != '{';
-    if (truth && (s->last == TOKEN_EQUALS || inside)) {
+    if (inside && !truth && (p[n + strspn(p + n, " \t")] == '=')) {
+        const bracket *in = &s->brackets[s->nest - 1];
+        complain(s, top(s)->line,
+                 "'%.*s =' stands inside the '%c' of line %d, whose '%s' "
+                 "seems to be missing",
+                 shown, p, in->open, in->line, open_word(in->open));
+        s->stopped = true;
+    } else if (truth && (s->last == TOKEN_EQUALS || inside)) {
         see_value(s);
     } else if (s->last == TOKEN_EQUALS || inside) {
         complain(s, top(s)->line, "'%.*s' is text and must stand in quotes: \"%.*s\"",

@@ -42,6 +42,39 @@ static const char *line_text(const kent_scan *scan, int line)
     return p ? p : "";
 }
 
+/* The name of the last "name =" of a line that stands there twice, or its only one. */
+static const char *repeated_name(const char *line, int *length)
+{
+    const size_t end = strcspn(line, "\n");
+    const char *found = NULL;
+    const char *last = NULL;
+    size_t last_length = 0;
+    size_t names = 0;
+    for (size_t i = 0; i < end; i++) {
+        const bool starts = (line[i] >= 'a' && line[i] <= 'z') &&
+                            (i == 0 || strchr(" \t;,{", line[i - 1]));
+        const size_t n = starts ? strspn(line + i, "abcdefghijklmnopqrstuvwxyz_") : 0;
+        const size_t after = i + n + strspn(line + i + n, " \t");
+        if (n == 0 || line[after] != '=') continue;
+        for (const char *q = line; q < line + i; q++) { /* the same one before it */
+            const bool same = strncmp(q, line + i, n) == 0 &&
+                              (q == line || strchr(" \t;,{", q[-1])) &&
+                              strchr(" \t=", q[n]);
+            if (!same) continue;
+            found = line + i;
+            *length = (int)n;
+        }
+        last = line + i;
+        last_length = n;
+        names++;
+    }
+    if (!found && names == 1) {
+        found = last;
+        *length = (int)last_length;
+    }
+    return found;
+}
+
 /* libconfig's bare reasons in our words. */
 static void complain_of_syntax(const kent_tree *t, kent_complaints *complaints)
 {
@@ -49,22 +82,26 @@ static void complain_of_syntax(const kent_tree *t, kent_complaints *complaints)
     const kent_place place = place_of_line(&t->scan, line);
     const char *file = t->scan.files[place.file];
     const char *why = config_error_text(&t->config);
+    const char *text = line_text(&t->scan, line);
+    int length = 0;
 
+    text += strspn(text, " \t");
     if (why && strstr(why, "duplicate")) {
-        kent_complain(complaints, file, place.line,
-                      "a key of this line is given twice in its group; keep one");
+        const char *name = repeated_name(text, &length);
+        kent_complain(
+            complaints, file, place.line,
+            name ? "'%.*s' is given twice in its group; keep one"
+                 : "a key of this line is given twice in its group; keep one%.*s",
+            name ? length : 0, name ? name : "");
     } else if (why && strstr(why, "mismatched")) {
         kent_complain(complaints, file, place.line,
                       "a list in [ ] mixes kinds of values; use ( ) for that");
     } else {
-        const char *text = line_text(&t->scan, line);
+        length = (int)strcspn(text, "\n");
         kent_complain(complaints, file, place.line,
                       "cannot be read from '%.*s' on; look here and at the line before "
                       "for a missing ',', ';', '=' or value",
-                      (int)strcspn(text + strspn(text, " \t"), "\n") < 40
-                          ? (int)strcspn(text + strspn(text, " \t"), "\n")
-                          : 40,
-                      text + strspn(text, " \t"));
+                      length < 40 ? length : 40, text);
     }
 }
 

@@ -1,0 +1,89 @@
+/* For tests of the reader: a text as a file, and what was complained of it. */
+#ifndef KENT_CASE_TEXT_H
+#define KENT_CASE_TEXT_H
+
+#include "kent_casefile.h"
+#include "kent_check.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <unistd.h>
+
+/* A main that reads without complaint: three points, one pipe, one valve. */
+static const char SOUND_CASE[] =
+    "format = 1;\n"
+    "title = \"Quarry lane\";\n"
+    "points = (\n"
+    "  { id = \"R1\"; x = \"0 m\"; y = \"0 m\"; z = \"50 m\"; },\n"
+    "  { id = \"B1\"; x = \"400 m\"; y = \"0 m\"; z = \"30 m\"; },\n"
+    "  { id = \"E1\"; x = \"700 m\"; y = \"300 m\"; z = \"20 m\"; }\n"
+    ");\n"
+    "pipes = ( { id = \"A\"; route = [ \"R1\", \"B1\", \"E1\" ];\n"
+    "  pipe_class = \"DI-EN545-C40-DN300\"; joint = \"push-on\"; } );\n"
+    "fixed_levels = ( { at = \"R1\"; level = \"80 m\"; } );\n"
+    "valves = ( { id = \"V1\"; at = \"E1\"; type = \"butterfly\"; size = \"300 mm\";\n"
+    "  flow = \"100 L/s\"; discharge_level = \"21 m\"; } );\n"
+    "scenarios = ( { id = \"shut\"; duration = \"30 s\"; class = \"occasional\";\n"
+    "  events = ( { valve = \"V1\"; start_time = \"1 s\"; ramp_time = \"10 s\"; to = "
+    "0.0; "
+    "} ); } );\n"
+    "ground = { soil = \"sand-SP\"; cover = \"1.2 m\"; water_table = \"none\"; };\n"
+    "loads = { test_pressure = \"12 bar\"; test_gauge_at = \"E1\"; safety_factor = "
+    "1.5; "
+    "};\n";
+
+/* Writes size bytes to a new file; its name into path. */
+static inline void write_bytes(char *path, const char *bytes, size_t size)
+{
+    (void)snprintf(path, 64, "/tmp/kent-case-XXXXXX");
+    const int fd = mkstemp(path);
+    assert_true(fd >= 0);
+    FILE *file = fdopen(fd, "wb");
+    assert_non_null(file);
+    assert_int_equal(fwrite(bytes, 1, size, file), size);
+    assert_int_equal(fclose(file), 0);
+}
+
+static inline kent_catalogue *read_catalogue(void)
+{
+    kent_complaints complaints = {0};
+    kent_error err = {0};
+    kent_catalogue *catalogue = NULL;
+    const kent_status status =
+        kent_catalogue_read(KENT_SOURCE_DIR "/config", &catalogue, &complaints, &err);
+    if (complaints.count > 0) print_error("%s\n", complaints.kept[0].what);
+    assert_int_equal(status, KENT_OK);
+    return catalogue;
+}
+
+/* Reads a text as a case; *out may be NULL afterwards. */
+static inline kent_status read_bytes(const kent_catalogue *catalogue, const char *bytes,
+                                     size_t size, kent_model **out,
+                                     kent_complaints *complaints)
+{
+    char path[64];
+    kent_error err = {0};
+    *complaints = (kent_complaints){0};
+    *out = NULL;
+    write_bytes(path, bytes, size);
+    const kent_status status = kent_case_read(path, catalogue, out, complaints, &err);
+    (void)unlink(path);
+    return status;
+}
+
+/* The text with the first `from` replaced by `to`; the caller frees. */
+static inline char *replaced(const char *text, const char *from, const char *to)
+{
+    const char *at = strstr(text, from);
+    assert_non_null(at);
+    const size_t before = (size_t)(at - text);
+    char *out = kent_alloc(strlen(text) + strlen(to) + 1, 1);
+    assert_non_null(out);
+    memcpy(out, text, before);
+    (void)snprintf(out + before, strlen(text) - before + strlen(to) + 1, "%s%s", to,
+                   at + strlen(from));
+    return out;
+}
+
+#endif

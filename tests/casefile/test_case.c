@@ -1,0 +1,309 @@
+/* From text to model: values, what is assumed, and that nothing crashes. */
+#include "case_text.h"
+
+#include <math.h>
+
+static kent_model *read_sound(const kent_catalogue *c, const char *text)
+{
+    kent_complaints complaints;
+    kent_model *m = NULL;
+    const kent_status status = read_bytes(c, text, strlen(text), &m, &complaints);
+    if (status != KENT_OK) print_error("%s\n", complaints.kept[0].what);
+    assert_int_equal(status, KENT_OK);
+    assert_non_null(m);
+    return m;
+}
+
+/* The value noted as assumed for something, NULL where it was not. */
+static const char *assumed(const kent_model *m, const char *what)
+{
+    for (size_t i = 0; i < m->assumed.count; i++) {
+        const char *note = m->assumed.text[i];
+        const size_t n = strlen(what);
+        if (strncmp(note, what, n) == 0 && note[n] == '\t') return note + n + 1;
+    }
+    return NULL;
+}
+
+static void values_arrive_in_si(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, SOUND_CASE);
+    assert_string_equal(m->title, "Quarry lane");
+    assert_int_equal(m->point_count, 3);
+    assert_close(m->points[1].at.x, 400.0, 1e-15);
+    assert_close(m->points[1].at.z, 30.0, 1e-15);
+    assert_int_equal(m->pipe_count, 1);
+    const kent_pipe *p = &m->pipes[0];
+    assert_close(p->outside_diameter, 0.326, 1e-12);
+    assert_close(p->wall_minimum, 0.0046, 1e-12);
+    assert_close(p->wall, 0.0062, 1e-12);
+    assert_close(p->lining, 0.004, 1e-12);
+    assert_close(p->inside_diameter, 0.326 - 2.0 * (0.0062 + 0.004), 1e-12);
+    assert_close(p->modulus, 170e9, 1e-12);
+    assert_int_equal(p->friction, KENT_COLEBROOK_WHITE);
+    assert_close(p->friction_coefficient, 1e-4, 1e-12);
+    assert_close(m->fixed_levels[0].level, 80.0, 1e-15);
+    assert_close(m->valves[0].flow, 0.1, 1e-12);
+    assert_true(isnan(m->valves[0].capacity));
+    assert_close(m->valves[0].discharge_level, 21.0, 1e-15);
+    assert_close(m->scenarios[0].duration, 30.0, 1e-15);
+    assert_close(m->events[0].ramp_time, 10.0, 1e-15);
+    assert_within(m->events[0].to, 0.0, 0.0);
+    assert_close(m->loads.test_pressure, 12e5, 1e-12);
+    assert_int_equal(m->loads.test_gauge, 2);
+    assert_close(m->loads.factor[KENT_CASE_TEST], 1.5, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_SUCTION], 1.5, 1e-15);
+    assert_int_equal(m->ground.soil, 0);
+    assert_string_equal(m->soils[0].id, "sand-SP");
+    assert_true(isinf(m->ground.water_table));
+    assert_true(kent_model_is_valid(m));
+    assert_int_equal(m->pipes[0].place.line, 8);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void defaults_are_those_of_the_table_and_are_said(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, SOUND_CASE);
+    assert_close(m->water.temperature, 288.15, 1e-12);
+    assert_non_null(assumed(m, "water temperature"));
+    assert_non_null(strstr(assumed(m, "water temperature"), "15 degC"));
+    assert_close(m->barometric, kent_barometric_pressure(0.0), 1e-15);
+    assert_non_null(assumed(m, "barometric pressure"));
+    assert_close(m->gravity, strtod(kent_key_find("site", "gravity")->fallback, NULL),
+                 1e-15);
+    assert_close(
+        m->solver.wave_speed_tolerance,
+        strtod(kent_key_find("solver", "wave_speed_tolerance")->fallback, NULL), 1e-15);
+    assert_int_equal(
+        m->solver.min_reaches,
+        strtol(kent_key_find("solver", "min_reaches")->fallback, NULL, 10));
+    assert_int_equal(
+        m->solver.history_rows,
+        strtol(kent_key_find("solver", "history_rows")->fallback, NULL, 10));
+    assert_true(m->solver.grid_check);
+    assert_int_equal(m->solver.friction, KENT_SURGE_QUASI_STEADY);
+    assert_non_null(assumed(m, "axial support of pipes with push-on joints"));
+    assert_non_null(assumed(m, "roughness of ductile-iron"));
+    assert_non_null(assumed(m, "modulus of ductile-iron"));
+    assert_non_null(assumed(m, "wall of DI-EN545-C40-DN300"));
+    assert_non_null(assumed(m, "allowable bearing of sand-SP"));
+    assert_non_null(assumed(m, "design rules"));
+    assert_null(assumed(m, "ground water"));  /* stated: none */
+    assert_null(assumed(m, "safety factor")); /* stated */
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void what_is_stated_is_not_noted_as_assumed(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *a =
+        replaced(SOUND_CASE, "joint = \"push-on\";",
+                 "joint = \"push-on\"; axial_support = \"fixed-upstream\"; roughness "
+                 "= \"0.2 mm\"; elastic_modulus = \"160 GPa\"; wall_thickness = \"7 "
+                 "mm\";");
+    char *b =
+        replaced(a, "ground =",
+                 "water = { temperature = \"50 degF\"; };\nsite = { altitude = \"300 "
+                 "m\"; gravity = \"9.81 m/s^2\"; };\nground =");
+    kent_model *m = read_sound(c, b);
+    assert_close(m->water.temperature, 283.15, 1e-9);
+    assert_close(m->gravity, 9.81, 1e-15);
+    assert_close(m->pipes[0].wall, 0.007, 1e-12);
+    assert_true(isnan(m->pipes[0].wall_minimum)); /* the class's goes with its wall */
+    assert_close(m->pipes[0].modulus, 160e9, 1e-12);
+    assert_null(assumed(m, "water temperature"));
+    assert_null(assumed(m, "barometric pressure"));
+    assert_null(assumed(m, "axial support of pipes with push-on joints"));
+    assert_null(assumed(m, "roughness of ductile-iron"));
+    assert_null(assumed(m, "modulus of ductile-iron"));
+    assert_null(assumed(m, "wall of DI-EN545-C40-DN300"));
+    kent_model_free(m);
+    free(a);
+    free(b);
+    kent_catalogue_free(c);
+}
+
+static void a_case_may_override_single_design_rules(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        replaced(SOUND_CASE, "ground =",
+                 "design_rules = { set = \"common-practice\"; least_thickness = "
+                 "\"0.6 m\"; };\nground =");
+    kent_model *m = read_sound(c, text);
+    assert_close(m->rules.least_thickness, 0.6, 1e-12);
+    assert_close(m->rules.least_height, 0.3, 1e-12);
+    bool said = false;
+    for (size_t i = 0; i < m->cautions.count; i++) {
+        said = said || strstr(m->cautions.text[i], "design rule least_thickness");
+    }
+    assert_true(said);
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static void a_soil_may_start_from_a_row_of_the_catalogue(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *a =
+        replaced(SOUND_CASE, "ground =",
+                 "soils = ( { id = \"fill\"; from = \"sand-SP\"; unit_weight = \"18 "
+                 "kN/m^3\"; factor_inside = 2.0; } );\nground =");
+    char *b =
+        replaced(a, "ground = { soil = \"sand-SP\"", "ground = { soil = \"fill\"");
+    kent_model *m = read_sound(c, b);
+    assert_int_equal(m->soil_count, 1);
+    assert_within(m->soils[0].allowable_bearing, 4000.0 * 47.880258980335843, 1e-6);
+    assert_close(m->soils[0].unit_weight, 18e3, 1e-12);
+    assert_close(m->soils[0].factor_inside, 2.0, 1e-15);
+    kent_model_free(m);
+    free(a);
+    free(b);
+    kent_catalogue_free(c);
+}
+
+static void factors_by_load_case_replace_the_one_factor(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        replaced(SOUND_CASE, "safety_factor = 1.5;",
+                 "safety_factor = 1.5; factors = { test = 1.2; exceptional = 1.1; };");
+    kent_model *m = read_sound(c, text);
+    assert_close(m->loads.factor[KENT_CASE_TEST], 1.2, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_EXCEPTIONAL], 1.1, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_STATIC], 1.5, 1e-15);
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static const char PORTS_CASE[] =
+    "format = 1;\n"
+    "fittings = ( { id = \"B7\"; type = \"bend\"; ports = (\n"
+    "  { direction = [ -2.0, 0.0, 0.0 ]; pressure = \"140 kPa\"; flow = \"-0.425 "
+    "m^3/s\";\n"
+    "    inside_diameter = \"600 mm\"; momentum_factor = 1.0; },\n"
+    "  { direction = ( 1, 1, 0 ); pressure = \"123.05 kPa\"; flow = \"0.425 m^3/s\";\n"
+    "    inside_diameter = \"300 mm\"; outside_diameter = \"326 mm\"; } ); } );\n";
+
+static void a_case_may_hold_nothing_but_a_fitting_with_ports(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, PORTS_CASE);
+    assert_int_equal(m->given_port_count, 2);
+    const kent_port *p = m->given_ports;
+    assert_close(p[0].direction.x, -1.0, 1e-15); /* made a unit vector */
+    assert_close(p[1].direction.y, sqrt(0.5), 1e-12);
+    assert_close(p[0].seal_diameter, 0.6, 1e-12);   /* the bore */
+    assert_close(p[1].seal_diameter, 0.326, 1e-12); /* the outside */
+    assert_close(p[0].momentum_factor, 1.0, 1e-15);
+    assert_true(isnan(p[1].momentum_factor));
+    assert_int_equal(m->fitting_count, 1);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void an_opening_law_keeps_its_points(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text = replaced(
+        SOUND_CASE, "ramp_time = \"10 s\"; to = 0.0;",
+        "opening_law = ( ( \"0 s\", 1.0 ), ( \"4 s\", 0.2 ), ( \"0.5 min\", 0 ) );");
+    kent_model *m = read_sound(c, text);
+    assert_int_equal(m->events[0].law_count, 3);
+    assert_close(m->law[2].time, 30.0, 1e-12);
+    assert_close(m->law[1].value, 0.2, 1e-15);
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static void more_faults_than_are_kept_are_still_counted(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_text text = {0};
+    kent_complaints complaints;
+    kent_model *m = NULL;
+    kent_text_add(&text, "format = 1;\npoints = (\n");
+    for (int i = 0; i < 50; i++) {
+        kent_text_add(&text, "%s{ id = \"P%d\"; z = 1.5; }\n", i ? ", " : "", i);
+    }
+    kent_text_add(&text, ");\n");
+    assert_int_equal(read_bytes(c, text.s, text.length, &m, &complaints), KENT_E_INPUT);
+    assert_int_equal(complaints.count, 50);
+    assert_int_equal(complaints.kept[0].line, 3);
+    assert_int_equal(complaints.kept[19].line, 22);
+    kent_text_clear(&text);
+    kent_catalogue_free(c);
+}
+
+/* Cut short or spoiled anywhere, a case is read or refused, never worse. */
+static void a_case_cut_short_anywhere_is_refused(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    const size_t size = strlen(SOUND_CASE);
+    for (size_t cut = 0; cut < size; cut += 10) {
+        kent_complaints complaints;
+        kent_model *m = NULL;
+        const kent_status status = read_bytes(c, SOUND_CASE, cut, &m, &complaints);
+        if (status != KENT_OK) assert_true(complaints.count > 0);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_case_with_any_byte_spoiled_is_read_or_refused(void **state)
+{
+    (void)state;
+    static const char SPOILS[] = {'\0', '{', ')', '"',  ',',   '=',
+                                  '@',  '9', '-', '\n', '\x80'};
+    kent_catalogue *c = read_catalogue();
+    const size_t size = strlen(SOUND_CASE);
+    char *text = kent_copy_text(SOUND_CASE);
+    assert_non_null(text);
+    for (size_t at = 0; at < size; at += 13) {
+        const char was = text[at];
+        kent_complaints complaints;
+        kent_model *m = NULL;
+        text[at] = SPOILS[(at / 13) % sizeof SPOILS];
+        const kent_status status = read_bytes(c, text, size, &m, &complaints);
+        assert_true(status == KENT_OK ? m != NULL : complaints.count > 0);
+        kent_model_free(m);
+        text[at] = was;
+    }
+    free(text);
+    kent_catalogue_free(c);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(values_arrive_in_si),
+        cmocka_unit_test(defaults_are_those_of_the_table_and_are_said),
+        cmocka_unit_test(what_is_stated_is_not_noted_as_assumed),
+        cmocka_unit_test(a_case_may_override_single_design_rules),
+        cmocka_unit_test(a_soil_may_start_from_a_row_of_the_catalogue),
+        cmocka_unit_test(factors_by_load_case_replace_the_one_factor),
+        cmocka_unit_test(a_case_may_hold_nothing_but_a_fitting_with_ports),
+        cmocka_unit_test(an_opening_law_keeps_its_points),
+        cmocka_unit_test(more_faults_than_are_kept_are_still_counted),
+        cmocka_unit_test(a_case_cut_short_anywhere_is_refused),
+        cmocka_unit_test(a_case_with_any_byte_spoiled_is_read_or_refused),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
