@@ -230,13 +230,19 @@ done:
     return status == KENT_E_NOMEM ? kent_error_nomem(err) : status;
 }
 
-void kent_units_free(kent_units *u)
+static void forget_known(kent_units *u)
 {
-    if (!u) return;
     for (size_t i = 0; i < u->known_count; i++) {
         free(u->known[i].text);
         cv_free(u->known[i].to_si);
     }
+    u->known_count = 0;
+}
+
+void kent_units_free(kent_units *u)
+{
+    if (!u) return;
+    forget_known(u);
     free(u->known);
     for (int k = 0; k < KENT_KIND_COUNT; k++) {
         ut_free(u->si[k]);
@@ -421,13 +427,7 @@ static kent_status convert(kent_units *u, const char *text, double number,
         if (k->kind == kind && strcmp(k->text, unit) == 0) to_si = k->to_si;
     }
     if (!to_si) {
-        if (u->known_count >= CACHE_LIMIT) { /* start again: rare, and still right */
-            for (size_t i = 0; i < u->known_count; i++) {
-                free(u->known[i].text);
-                cv_free(u->known[i].to_si);
-            }
-            u->known_count = 0;
-        }
+        if (u->known_count >= CACHE_LIMIT) forget_known(u); /* rare, and still right */
         const kent_status status = learn(u, text, unit, kind, &to_si, err);
         if (status != KENT_OK) return status;
     }
