@@ -14,4 +14,4 @@ if ! { (cd "$root" && cmake --preset release) &&
     cat "$log" >&2
     exit 1
 fi
-exec "$root/build/kentledge" run "$root/cases/design/DEMO/DEMO.cfg" "$@"
+exec "$root/build/kentledge" run "$root/cases/design/brackenmoss/brackenmoss.cfg" "$@"
