@@ -276,38 +276,67 @@ static void seen_keep(const kent_recorder *r, const kent_slot *slot,
     }
 }
 
+/* Thrusts of consecutive instants, component by component: the shape compilers
+ * vectorise. */
+enum { CHUNK = 64 };
+
+typedef struct kent_thrusts {
+    double x[CHUNK], y[CHUNK], z[CHUNK]; /* N */
+} kent_thrusts;
+
+/* 09.6 for `count` instants from row `first` of the trace. */
+static void sensor_thrusts(const kent_recorder *r, const kent_sensor *sensor,
+                           const kent_trace *trace, size_t first, size_t count,
+                           kent_thrusts *out)
+{
+    double h[CHUNK], square[CHUNK];
+
+    for (size_t n = 0; n < count; n++) {
+        out->x[n] = sensor->constant.x;
+        out->y[n] = sensor->constant.y;
+        out->z[n] = sensor->constant.z;
+    }
+    for (size_t k = 0; k < sensor->term_count; k++) {
+        const kent_term term = r->terms[sensor->term_first + k];
+        const size_t width = trace->watch_count, from = first * width + term.watch;
+        for (size_t n = 0; n < count; n++) {
+            const double flow = trace->flow[from + n * width];
+            h[n] = trace->head[from + n * width];
+            square[n] = flow * flow;
+        }
+        for (size_t n = 0; n < count; n++) {
+            out->x[n] += term.per_head.x * h[n] + term.per_square.x * square[n];
+            out->y[n] += term.per_head.y * h[n] + term.per_square.y * square[n];
+            out->z[n] += term.per_head.z * h[n] + term.per_square.z * square[n];
+        }
+    }
+}
+
 /* Finds the worst instants of a trace for one fitting, then keeps those alone. */
 static void seen_take(const kent_recorder *r, const kent_slot *slot,
                       const kent_trace *trace, size_t index)
 {
-    const kent_sensor *sensor = &r->sensors[index];
-    const kent_term *terms = &r->terms[sensor->term_first];
     kent_seen *seen = &slot->seen[index];
     size_t at[KENT_SENSES];
     bool better[KENT_SENSES] = {false};
+    kent_thrusts t;
 
-    for (size_t n = 0; n < trace->count; n++) {
-        const double *head = trace->head + n * trace->watch_count;
-        const double *flow = trace->flow + n * trace->watch_count;
-        kent_vec3 t = sensor->constant;
-        for (size_t k = 0; k < sensor->term_count; k++) {
-            const kent_term *term = &terms[k];
-            const double h = head[term->watch];
-            const double square = flow[term->watch] * flow[term->watch];
-            t.x += term->per_head.x * h + term->per_square.x * square;
-            t.y += term->per_head.y * h + term->per_square.y * square;
-            t.z += term->per_head.z * h + term->per_square.z * square;
+    for (size_t first = 0; first < trace->count; first += CHUNK) {
+        const size_t left = trace->count - first, count = left < CHUNK ? left : CHUNK;
+        sensor_thrusts(r, &r->sensors[index], trace, first, count, &t);
+        for (size_t n = 0; n < count; n++) {
+            const double sideways = t.x[n] * t.x[n] + t.y[n] * t.y[n];
+            const double all = sideways + t.z[n] * t.z[n];
+            const double now[KENT_SENSES] = {all, sideways, t.z[n], -t.z[n]};
+            if (!(all >= 0.0)) continue; /* not a number */
+            for (size_t k = 0; k < KENT_SENSES; k++) {
+                if (!(now[k] > seen->best[k])) continue;
+                seen->best[k] = now[k];
+                at[k] = first + n;
+                better[k] = true;
+            }
+            seen_count_level(seen, all);
         }
-        const double sideways = t.x * t.x + t.y * t.y;
-        const double now[KENT_SENSES] = {sideways + t.z * t.z, sideways, t.z, -t.z};
-        if (!(now[KENT_RESULTANT] >= 0.0)) continue; /* not a number */
-        for (size_t k = 0; k < KENT_SENSES; k++) {
-            if (!(now[k] > seen->best[k])) continue;
-            seen->best[k] = now[k];
-            at[k] = n;
-            better[k] = true;
-        }
-        seen_count_level(seen, now[KENT_RESULTANT]);
     }
     for (size_t k = 0; k < KENT_SENSES; k++) {
         if (better[k]) seen_keep(r, slot, trace, index, at[k], &seen->frame[k]);
