@@ -170,6 +170,35 @@ static void base_size(const kent_rules *rules, const kent_site *site,
     out->volume = out->width * out->height * out->thickness;
 }
 
+/* The concrete behind the face, without the pipe that passes through. m3 */
+static double bearing_concrete(const kent_block *b, const kent_site *site)
+{
+    return (b->width * b->height - site->hole) * b->thickness;
+}
+
+/* Makes a bearing block of the face, if the block's own weight and footing do for what
+ * little lifts or presses it. */
+static bool bearing_carries(const kent_rules *rules, const kent_site *site,
+                            const kent_demand *demand, kent_block *out)
+{
+    kent_block b = *out;
+
+    b.type = KENT_BLOCK_BEARING;
+    b.width = b.face.width;
+    b.height = b.face.height;
+    b.thickness = b.face_thickness;
+    b.volume = b.width * b.height * b.thickness;
+    const double base = kent_site_axis(site) + 0.5 * b.height;
+    const double weight = kent_site_concrete(site, rules, base);
+    const double footing = b.width * b.thickness * site->vertical;
+    b.submerged =
+        demand->load[KENT_UPWARD] > 0.0 && weight < rules->concrete_unit_weight;
+    if (demand->load[KENT_UPWARD] > bearing_concrete(&b, site) * weight) return false;
+    if (demand->load[KENT_DOWNWARD] > footing) return false;
+    *out = b;
+    return true;
+}
+
 /* ---- a block
  * -------------------------------------------------------------------------- */
 
@@ -185,7 +214,8 @@ kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
         fault = face_size(rules, site, sideways, out);
         if (fault != KENT_FAULT_NONE) return fault;
     }
-    if (up > 0.0 || down > 0.0) {
+    const bool carries = sideways > 0.0 && bearing_carries(rules, site, demand, out);
+    if (!carries) {
         if (up >= down) {
             gravity_size(rules, site, demand, out);
         } else {
@@ -195,12 +225,6 @@ kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
         if (out->has_face) {
             out->face_volume = out->face.width * out->face.height * out->face_thickness;
         }
-    } else if (sideways > 0.0) {
-        out->type = KENT_BLOCK_BEARING;
-        out->width = out->face.width;
-        out->height = out->face.height;
-        out->thickness = out->face_thickness;
-        out->volume = out->width * out->height * out->thickness;
     }
     if (out->volume + out->face_volume > rules->largest_volume) {
         return KENT_FAULT_VOLUME;
@@ -215,8 +239,10 @@ void kent_block_use(const kent_block *block, const kent_rules *rules,
 {
     const double weight = rules->concrete_unit_weight -
                           (block->submerged ? rules->water_unit_weight : 0.0);
-    const bool gravity = block->type == KENT_BLOCK_GRAVITY;
-    const double plan = block->width * (gravity ? block->thickness : block->height);
+    const bool base = block->type == KENT_BLOCK_BASE;
+    const bool bearing = block->type == KENT_BLOCK_BEARING;
+    const double plan = block->width * (base ? block->height : block->thickness);
+    const double volume = bearing ? bearing_concrete(block, site) : block->volume;
 
     for (int s = 0; s < KENT_SENSES; s++) {
         use[s] = 0.0;
@@ -226,7 +252,7 @@ void kent_block_use(const kent_block *block, const kent_rules *rules,
         use[KENT_SIDEWAYS] = demand->load[KENT_SIDEWAYS] / (face * site->allowable);
     }
     if (demand->load[KENT_UPWARD] > 0.0) {
-        use[KENT_UPWARD] = demand->load[KENT_UPWARD] / (block->volume * weight);
+        use[KENT_UPWARD] = demand->load[KENT_UPWARD] / (volume * weight);
     }
     if (demand->load[KENT_DOWNWARD] > 0.0) {
         use[KENT_DOWNWARD] = demand->load[KENT_DOWNWARD] / (plan * site->vertical);

@@ -21,10 +21,12 @@ static void derive_reached(const kent_holding_work *w, kent_holding *h,
                            kent_sense sense, const char *formula)
 {
     kent_derivation *d = &h->derivation;
-    const double asked = w->loads->cases[h->by_sense[sense]].safety_factor;
+    const kent_load_case *c = &w->loads->cases[h->by_sense[sense]];
+    const double asked = c->safety_factor;
     const double use = w->use[sense];
 
-    rule(d, "SF", asked, KENT_RATIO, "factor asked for, of this load case");
+    kent_derivation_put(d, "SF", asked, KENT_RATIO, kent_factor_source(w->m, c),
+                        "factor asked for, of this load case");
     kent_derivation_work(d, "u", use, KENT_RATIO, formula, "10.9",
                          "factored load over resistance");
     kent_derivation_work(d, "SFr", asked / use, KENT_RATIO, "SF/u", "10.10",
@@ -32,7 +34,9 @@ static void derive_reached(const kent_holding_work *w, kent_holding *h,
     if (sense == KENT_UPWARD) return; /* weight has no factor inside */
     const double inside = w->soil->factor_inside;
     kent_derivation_put(d, "fi", inside, KENT_RATIO, kent_soil_source(w->soil),
-                        "factor already inside the soil's value");
+                        inside > 1.0 ? "factor already inside the soil's value"
+                                     : "no factor is inside the soil's value");
+    if (inside <= 1.0) return;
     kent_derivation_work(d, "SFa", asked * inside, KENT_RATIO, "SF*fi", "10.10",
                          "factor asked for, with the one inside");
     kent_derivation_work(d, "SFt", asked / use * inside, KENT_RATIO, "SFr*fi", "10.10",
@@ -127,6 +131,29 @@ static bool derive_concrete(const kent_holding_work *w, kent_holding *h)
     return true;
 }
 
+/* What little lifts or presses a bearing block, on its own weight and footing. */
+static void derive_bearing_upright(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+    const kent_block *b = &h->block;
+    const bool hole = w->site.hole > 0.0;
+
+    if (w->demand.load[KENT_UPWARD] > 0.0) {
+        kent_derivation_heading(d, "Weight of the same block for the upward thrust");
+        const bool wet = derive_concrete(w, h);
+        const double concrete = b->volume - w->site.hole * b->thickness;
+        kent_derivation_work(d, "Vc", concrete, KENT_VOLUME, hole ? "V - Ah*t" : "V",
+                             "10.13", "concrete that weighs on the pipe");
+        derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(Vc*gb)" : "Fup/(Vc*gc)");
+    }
+    if (w->demand.load[KENT_DOWNWARD] > 0.0) {
+        kent_derivation_heading(d, "Footing of the same block for the downward thrust");
+        kent_derivation_put(d, "qv", w->site.vertical, KENT_STRESS,
+                            kent_soil_source(w->soil), "bearing under a base");
+        derive_reached(w, h, KENT_DOWNWARD, "Fdn/(w*t*qv)");
+    }
+}
+
 static void derive_gravity(const kent_holding_work *w, kent_holding *h)
 {
     kent_derivation *d = &h->derivation;
@@ -210,6 +237,7 @@ void kent_block_derive(const kent_holding_work *w, kent_holding *h)
 {
     if (h->block.type == KENT_BLOCK_NONE) return;
     if (w->demand.load[KENT_SIDEWAYS] > 0.0) derive_face(w, h);
+    if (h->block.type == KENT_BLOCK_BEARING) derive_bearing_upright(w, h);
     if (h->block.type == KENT_BLOCK_GRAVITY) derive_gravity(w, h);
     if (h->block.type == KENT_BLOCK_BASE) derive_base(w, h);
 }

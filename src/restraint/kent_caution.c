@@ -92,7 +92,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
                        "the thrust runs along a trench or comes from either side: both "
                        "faces must reach undisturbed ground, not backfill");
     }
-    if (b->type == KENT_BLOCK_GRAVITY) {
+    if (w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions,
                        "straps or rods from pipe to block must carry %s upwards",
                        kent_say(units, KENT_FORCE, w->demand.load[KENT_UPWARD]).s);
@@ -106,7 +106,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
                        "the block stands in ground water: its concrete is "
                        "taken at its weight less the water's");
     }
-    if (isnan(w->fitting->water_table) && b->type == KENT_BLOCK_GRAVITY) {
+    if (isnan(w->fitting->water_table) && w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions, "no water table is stated: none is assumed");
     }
     if (h->design_thrust > LARGE) {

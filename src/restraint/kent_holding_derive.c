@@ -18,6 +18,11 @@ kent_source kent_soil_source(const kent_soil *soil)
     return strncmp(soil->source, "given", 5) == 0 ? KENT_GIVEN : KENT_CATALOGUE;
 }
 
+kent_source kent_factor_source(const kent_model *m, const kent_load_case *c)
+{
+    return isnan(m->loads.factor[c->kind]) ? KENT_CATALOGUE : KENT_GIVEN;
+}
+
 /* Whether the sum of the momentum table that stands above is this thrust. */
 static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
 {
@@ -37,7 +42,6 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     const struct sense_words *word = &SENSES[sense];
     const kent_load_case *c = &w->loads->cases[h->by_sense[sense]];
     const double part = kent_holding_part(c, sense);
-    const bool given = !isnan(w->m->loads.factor[c->kind]);
     char says[120];
 
     (void)snprintf(says, sizeof says, "Factored load: %s, case '%s'", word->says,
@@ -50,8 +54,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
         kent_derivation_put(d, word->part, part, KENT_FORCE, KENT_COMPUTED, word->says);
     }
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
-                        given ? KENT_GIVEN : KENT_CATALOGUE,
-                        "factor of this load case");
+                        kent_factor_source(w->m, c), "factor of this load case");
     kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
                          word->formula_factored, "10.11", "factored load");
     if (sense != h->sense || h->runner_up < 0) return;

@@ -41,7 +41,9 @@ void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 void kent_block_derive(const kent_holding_work *w, kent_holding *h);
 void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg);
 
-/* "given" or "catalogue": where the values of a soil come from. */
+/* "given" or "catalogue": where the values of a soil, or the factor of a case, come
+ * from. */
 kent_source kent_soil_source(const kent_soil *soil);
+kent_source kent_factor_source(const kent_model *m, const kent_load_case *c);
 
 #endif

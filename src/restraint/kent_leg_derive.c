@@ -114,7 +114,7 @@ static void derive_length(const kent_holding_work *w, const kent_holding *h,
     (void)snprintf(says, sizeof says, "whole thrust, case '%s'", c->name);
     kent_derivation_put(d, "T", kent_vec3_length(w->pull), KENT_FORCE, KENT_COMPUTED,
                         says);
-    kent_derivation_put(d, "SF", k->factor, KENT_RATIO, KENT_CATALOGUE,
+    kent_derivation_put(d, "SF", k->factor, KENT_RATIO, kent_factor_source(w->m, c),
                         "factor of this load case");
     if (!k->bend) {
         kent_derivation_work(d, "L", k->length, KENT_LENGTH, "SF*T/Fs", "11.10",

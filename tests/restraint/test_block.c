@@ -200,6 +200,31 @@ static void a_turn_in_plan_and_profile_gets_a_weight_and_a_face(void **state)
     kent_build_clear(&b);
 }
 
+/* A slight climb into the bend lifts it by less than the block behind the face weighs,
+ * a slight fall presses on it: no second block is made. */
+static void a_little_lift_is_left_to_the_weight_of_the_bearing_block(void **state)
+{
+    (void)state;
+    for (int way = -1; way <= 1; way += 2) {
+        kent_build b = main_that_turns(22.5 * DEGREE, way * 1.2);
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = holding_of(&b, r, "B");
+        const kent_sense sense = way > 0 ? KENT_UPWARD : KENT_DOWNWARD;
+        const double vertical = 1.5 * 2.0 * 1.0e6 * 0.25 * PI * 0.62 * 0.62 * 1.2 /
+                                hypot(200.0, 1.2); /* each leg slopes by 1.2 in 200 */
+
+        assert_true(h->held);
+        assert_int_equal(h->by_sense[sense], 0);
+        assert_true(vertical > 0.02 * h->design_thrust);
+        assert_int_equal(h->block.type, KENT_BLOCK_BEARING);
+        assert_false(h->block.has_face);
+        assert_true(vertical <= h->block.volume * 23e3);
+        assert_true(kent_hand_says(h, "straps or rods") == (way > 0));
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 /* A main of 600 that goes on as 400: 1 MPa on 0.62 m less 0.42 m is 163.4 kN. */
 static kent_build main_that_narrows(void)
 {
@@ -270,6 +295,7 @@ int main(void)
         cmocka_unit_test(a_crest_in_ground_water_takes_more_concrete),
         cmocka_unit_test(a_sag_gets_a_base_on_the_ground_below),
         cmocka_unit_test(a_turn_in_plan_and_profile_gets_a_weight_and_a_face),
+        cmocka_unit_test(a_little_lift_is_left_to_the_weight_of_the_bearing_block),
         cmocka_unit_test(a_face_that_the_pipe_runs_through_bears_on_what_is_left),
         cmocka_unit_test(every_block_of_many_depths_keeps_the_rules),
     };

@@ -147,6 +147,30 @@ static void so_it_does_where_a_fitting_is_pushed_up_and_pulled_down(void **state
     kent_build_clear(&b);
 }
 
+/* The tee and the reducer on a slight slope: face, weight and footing of one block. */
+static void so_it_does_where_one_block_does_for_all(void **state)
+{
+    (void)state;
+    for (int way = -1; way <= 1; way += 2) {
+        kent_build b = main_of_everything();
+        b.model->points[6].at.z -= way * 2.0; /* the branch falls, or climbs */
+        b.model->points[8].at.z -= way * 6.0; /* so does the end */
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, CASES, 3);
+        const kent_holding *reducer = &r->fittings[kent_build_fitting_of(&b, "G")];
+        const kent_holding *tee = &r->fittings[kent_build_fitting_of(&b, "T")];
+        assert_int_equal(reducer->block.type, KENT_BLOCK_BEARING);
+        assert_int_equal(tee->block.type, KENT_BLOCK_BEARING);
+        const kent_line *vertical = kent_derivation_find(
+            &reducer->derivation, reducer->by_sense[KENT_UPWARD] >= 0 ? "Vc" : "qv");
+        assert_non_null(vertical);
+        assert_true(check_lines("G", &reducer->derivation, KENT_SI) > 20);
+        assert_true(check_lines("T", &tee->derivation, KENT_US) > 20);
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 static void the_calculation_names_the_case_and_the_runner_up(void **state)
 {
     (void)state;
@@ -172,6 +196,7 @@ int main(void)
         cmocka_unit_test(so_it_does_in_inches),
         cmocka_unit_test(so_it_does_with_restrained_joints),
         cmocka_unit_test(so_it_does_where_a_fitting_is_pushed_up_and_pulled_down),
+        cmocka_unit_test(so_it_does_where_one_block_does_for_all),
         cmocka_unit_test(the_calculation_names_the_case_and_the_runner_up),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
