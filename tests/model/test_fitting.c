@@ -196,16 +196,16 @@ a_gasketed_joint_seals_on_the_outside_a_continuous_one_on_the_bore(void **state)
 {
     (void)state;
     static const struct {
-        kent_joint joint;
         double seal; /* m: bore 0.6, outside diameter 0.62 */
+        kent_joint joint;
         kent_restraint_choice restraint;
     } rows[] = {
-        {KENT_PUSH_ON, 0.62, KENT_THRUST_BLOCK},
-        {KENT_MECHANICAL, 0.62, KENT_THRUST_BLOCK},
-        {KENT_RESTRAINED, 0.62, KENT_RESTRAINED_JOINTS},
-        {KENT_FLANGED, 0.60, KENT_RESTRAINED_JOINTS},
-        {KENT_WELDED, 0.60, KENT_RESTRAINED_JOINTS},
-        {KENT_FUSED, 0.60, KENT_RESTRAINED_JOINTS},
+        {0.62, KENT_PUSH_ON, KENT_THRUST_BLOCK},
+        {0.62, KENT_MECHANICAL, KENT_THRUST_BLOCK},
+        {0.62, KENT_RESTRAINED, KENT_RESTRAINED_JOINTS},
+        {0.60, KENT_FLANGED, KENT_RESTRAINED_JOINTS},
+        {0.60, KENT_WELDED, KENT_RESTRAINED_JOINTS},
+        {0.60, KENT_FUSED, KENT_RESTRAINED_JOINTS},
     };
     kent_build b = turning((kent_vec3){-30.0, 0.0, 0.0}, (kent_vec3){0.0, 70.0, 0.0});
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
