@@ -10,10 +10,10 @@
 #include <string.h>
 
 enum {
-    SEARCH_LIMIT = 50,  /* iterations of KINSOL */
-    POLISH_LIMIT = 60,  /* plain Newton steps after it */
-    PATIENCE = 3,       /* steps without gain before polishing ends */
-    PATIENCE_LOST = 30  /* the same where KINSOL gave up */
+    SEARCH_LIMIT = 50, /* iterations of KINSOL */
+    POLISH_LIMIT = 60, /* plain Newton steps after it */
+    PATIENCE = 3,      /* steps without gain before polishing ends */
+    PATIENCE_LOST = 30 /* the same where KINSOL gave up */
 };
 
 /* KINSOL's own tolerances, in units of the scales: it need only come near, polishing

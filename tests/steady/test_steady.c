@@ -224,6 +224,26 @@ static void flow_against_the_route_is_negative(void **state)
     kent_build_clear(&b);
 }
 
+/* Daugherty & Franzini, Fluid Mechanics, Ex 8.5 p 241: 5000 ft of 10 in, f 0.02, inlet
+ * 0.5, 260 ft of fall: 6.40 cfs. */
+static void a_long_line_passes_what_daugherty_finds(void **state)
+{
+    (void)state;
+    const double foot = 0.3048; /* m */
+    kent_build b = kent_build_new();
+    add_point(&b, "R", 0.0, 0.0);
+    add_point(&b, "S", 5000.0 * foot, 0.0);
+    add_pipe(&b, "A", "R S", 10.0 / 12.0 * foot, 5000.0 * foot, 0.02);
+    const int level = kent_build_fixed_level(&b, "R", 300.0 * foot);
+    b.model->fixed_levels[level].loss = 0.5;
+    kent_build_fixed_level(&b, "S", 40.0 * foot);
+    kent_steady *s = solve(&b);
+    assert_close(flow_in(&b, s, "A"), 6.40 * foot * foot * foot, 0.005);
+    check_all(b.model, s);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
 /* One pipe from a level at 100 m to an outflow; returns the drop of head. */
 static double drop_of(kent_build *b, double flow)
 {
@@ -887,7 +907,8 @@ static void a_grid_of_three_thousand_junctions_is_solved(void **state)
     char id[16];
     for (int i = 0; i < GRID_SIDE * GRID_SIDE; i++) {
         (void)snprintf(id, sizeof id, "n%d", i);
-        kent_build_point(&b, id, 100.0 * (i % GRID_SIDE), 100.0 * (i / GRID_SIDE),
+        const int row = i / GRID_SIDE;
+        kent_build_point(&b, id, 100.0 * (i % GRID_SIDE), 100.0 * row,
                          5.0 * sin(0.01 * i));
     }
     for (int i = 0; i < GRID_SIDE * GRID_SIDE; i++) {
@@ -977,6 +998,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(two_reservoirs_share_out_their_head_in_one_pipe),
         cmocka_unit_test(flow_against_the_route_is_negative),
+        cmocka_unit_test(a_long_line_passes_what_daugherty_finds),
         cmocka_unit_test(smooth_steel_pipe_loses_what_cengel_finds),
         cmocka_unit_test(cast_iron_line_needs_the_level_cengel_finds),
         cmocka_unit_test(hazen_williams_line_loses_its_closed_form),
