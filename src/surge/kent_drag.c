@@ -178,7 +178,8 @@ static void refresh_in_rotation(kent_drag *d, kent_waves *w)
 void kent_drag_refresh(kent_drag *d, kent_waves *w)
 {
     if (!d->follows || w->span_count == 0) return;
-    for (size_t span = 0; span < w->span_count; span++)
+    for (size_t span = 0; span < w->span_count; span++) {
         refresh_moved(d, w, span);
+    }
     refresh_in_rotation(d, w);
 }

@@ -4,6 +4,7 @@
 
 /* target bodies and a pointer rather than target_clones: the latter crashes under
  * gcc's ThreadSanitizer and binds wrongly with clang 14. */
+/* NOLINTBEGIN(bugprone-macro-parentheses): an attribute stands bare */
 #define KENT_KERNEL(level, attribute)                                                  \
     attribute static int64_t explicit_##level(                                         \
         size_t n, double limit, const double *restrict k, double *restrict p,          \
@@ -17,6 +18,7 @@
     {                                                                                  \
         return kent_kernel_body(n, limit, 1, k, p, m, highest, lowest);                \
     }
+/* NOLINTEND(bugprone-macro-parentheses) */
 
 KENT_KERNEL(base, )
 #ifdef __x86_64__

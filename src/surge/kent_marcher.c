@@ -93,6 +93,7 @@ static void start_waves(kent_marcher *k, const kent_steady *s)
     kent_drag_start(k->drag, k->model, s, k->waves);
 }
 
+/* NOLINTNEXTLINE(readability-function-size): five things to know, four to say how */
 kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
                              const kent_grid *grid, int scenario,
                              const kent_watch *watches, size_t watch_count,

@@ -12,8 +12,9 @@ static double by_law(const kent_move *move, double elapsed)
     const size_t n = move->event->law_count;
     size_t i = 0;
 
-    while (i < n && law[i].time <= elapsed)
+    while (i < n && law[i].time <= elapsed) {
         i++;
+    }
     if (i == 0) return move->from;
     if (i == n) return law[n - 1].value;
     const double share = (elapsed - law[i - 1].time) / (law[i].time - law[i - 1].time);

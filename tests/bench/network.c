@@ -69,10 +69,10 @@ static void add_stub(kent_build *b, plan *p, int number)
 static void add_cut(kent_build *b, plan *p, int number)
 {
     char id[KENT_ID], route[3 * KENT_ID];
-    const int from = draw_junction(p, JUNCTIONS), to = draw_junction(p, JUNCTIONS);
-    if (from == to) {
-        add_cut(b, p, number);
-        return;
+    const int from = draw_junction(p, JUNCTIONS);
+    int to = from;
+    while (to == from) {
+        to = draw_junction(p, JUNCTIONS);
     }
     (void)snprintf(id, sizeof id, "v%d", number);
     kent_build_point(b, id, (double)NAN, (double)NAN, 10.0);
@@ -105,12 +105,15 @@ kent_build network_build(void)
         (void)snprintf(id, sizeof id, "j%d", i);
         kent_build_point(&b, id, (double)NAN, (double)NAN, 10.0 * draw(&p));
     }
-    for (int i = 1; i < JUNCTIONS; i++)
+    for (int i = 1; i < JUNCTIONS; i++) {
         connect(&b, &p, draw_junction(&p, i), i);
-    for (int i = 0; i < STUBS; i++)
+    }
+    for (int i = 0; i < STUBS; i++) {
         add_stub(&b, &p, i);
-    for (int i = 0; i < STUBS - 1; i++)
+    }
+    for (int i = 0; i < STUBS - 1; i++) {
         add_cut(&b, &p, i);
+    }
     while (p.pipes < NETWORK_SPANS) {
         const int from = draw_junction(&p, JUNCTIONS),
                   to = draw_junction(&p, JUNCTIONS);

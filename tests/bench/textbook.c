@@ -51,7 +51,8 @@ textbook *textbook_new(const kent_model *m, const kent_steady *s, const kent_gri
     if (!t) return NULL;
     *t = (textbook){m, s, grid, follow, 0, NULL, NULL};
     t->lines = calloc(m->span_count, sizeof *t->lines);
-    t->moves = calloc(m->valve_count + 1, sizeof *t->moves);
+    t->moves =
+        calloc(m->valve_count + 1, sizeof(const kent_event *)) /* NOLINT: pointers */;
     if (!t->lines || !t->moves) goto fail;
     for (size_t i = 0; scenario >= 0 && i < m->scenarios[scenario].event_count; i++) {
         const kent_event *e = &m->events[m->scenarios[scenario].event_first + i];
@@ -256,12 +257,15 @@ void textbook_run(textbook *t, size_t steps)
     const kent_model *m = t->model;
     for (size_t k = 0; k < steps; k++) {
         t->step++;
-        for (size_t i = 0; i < m->span_count; i++)
+        for (size_t i = 0; i < m->span_count; i++) {
             run_line(t, i);
-        for (size_t i = 0; i < m->node_count; i++)
+        }
+        for (size_t i = 0; i < m->node_count; i++) {
             solve_node(t, &m->nodes[i]);
-        for (size_t i = 0; i < m->span_count; i++)
+        }
+        for (size_t i = 0; i < m->span_count; i++) {
             take_over(&t->lines[i]);
+        }
     }
 }
 

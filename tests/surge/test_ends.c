@@ -11,7 +11,8 @@ static void a_level_loses_velocity_head_on_the_way_out_only(void **state)
     (void)state;
     const kent_level level = {100.0, 3.0}; /* m, s2/m5 */
     const double y = 0.02;                 /* m2/s */
-    for (double c = 40.0; c < 100.0; c += 7.0) {
+    for (int i = 0; i < 9; i++) {
+        const double c = 40.0 + 7.0 * i; /* m */
         const double head = kent_level_head(&level, c, y), flow = (head - c) * y;
         assert_true(flow > 0.0);
         assert_close(head, 100.0 - 3.0 * flow * flow, 1e-13);
@@ -36,7 +37,8 @@ static void a_draw_that_depends_on_pressure_follows_its_root(void **state)
     const kent_draw draw = {0.3, 10.0, 20.0}; /* whole from 20 m above 10 m */
     const double y = 0.01;
     assert_close(kent_draw_head(&draw, 61.0, y), 31.0, 1e-14);
-    for (double c = 11.0; c < 60.0; c += 7.0) {
+    for (int i = 0; i < 7; i++) {
+        const double c = 11.0 + 7.0 * i; /* m */
         const double head = kent_draw_head(&draw, c, y);
         assert_true(head > 10.0 && head < 30.0);
         assert_close((c - head) * y, 0.3 * sqrt((head - 10.0) / 20.0), 1e-12);
@@ -55,8 +57,10 @@ static void what_feeds_the_main_does_so_at_any_pressure(void **state)
 static void a_valve_passes_what_its_capacity_and_the_waves_allow(void **state)
 {
     (void)state;
-    for (double capacity = 1e-9; capacity < 1e4; capacity *= 10.0) {
-        for (double drop = -50.0; drop < 50.0; drop += 20.0) {
+    for (int i = -9; i < 4; i++) {
+        const double capacity = pow(10.0, i); /* m^2.5/s */
+        for (int j = 0; j < 6; j++) {
+            const double drop = -50.0 + 20.0 * j; /* m */
             const double q = kent_gate_flow(capacity, drop, 150.0);
             const double left = drop - 150.0 * q; /* m, over the valve */
             assert_true(q * drop > 0.0 && left * drop >= -1e-11);

@@ -10,7 +10,7 @@
 static kent_build line_of(const double *length, int count)
 {
     kent_build b = kent_build_new();
-    char id[8], route[16];
+    char id[16], route[32];
     for (int i = 0; i <= count; i++) {
         (void)snprintf(id, sizeof id, "P%d", i);
         kent_build_point(&b, id, (double)NAN, (double)NAN, 0.0);
@@ -76,7 +76,8 @@ static void the_step_is_the_longest_that_meets_the_tolerance(void **state)
     assert_int_equal(g->miss_count, 0);
     const double first = 144.4 / 1000.0 / 20.0;
     assert_true(g->step < first * (1.0 - 1e-6)); /* had to be searched for */
-    for (double step = first; step > g->step * (1.0 + 1e-6); step *= 1.0 - 1e-6) {
+    double step = first;
+    while (step > g->step * (1.0 + 1e-6)) {
         bool suits = true;
         for (int i = 0; i < 4; i++) {
             const double reaches = length[i] / 1000.0 / step;
@@ -85,6 +86,7 @@ static void the_step_is_the_longest_that_meets_the_tolerance(void **state)
             suits = suits && (fabs(up) <= 0.004 || fabs(down) <= 0.004);
         }
         assert_false(suits);
+        step *= 1.0 - 1e-6;
     }
     kent_grid_free(g);
     kent_build_clear(&b);

@@ -370,7 +370,7 @@ static void a_valve_follows_its_opening_law(void **state)
     march m = march_new(&b, 60.0, s, &at, 1, 1);
     kent_trace trace;
     kent_error err = {0};
-    for (int i = 0; i < 400; i++) {
+    do {
         assert_int_equal(kent_marcher_advance(m.marcher, 1, &trace, &err), 1);
         const double t = trace.time[0] - 1.0;
         double opening = 1.0;
@@ -380,8 +380,7 @@ static void a_valve_follows_its_opening_law(void **state)
         if (t > 9.0) opening = 0.1;
         const double q = 0.02 * opening * sqrt(fabs(trace.head[0]));
         assert_within(trace.flow[0], copysign(q, trace.head[0]), 1e-12);
-    }
-    assert_true(trace.time[0] > 11.0);
+    } while (trace.time[0] < 12.0);
     march_clear(&m);
     kent_build_clear(&b);
 }
@@ -420,8 +419,9 @@ static void beyond_the_stability_limit_the_march_stops_and_says_where(void **sta
     assert_non_null(strstr(err.what, "it needs at least 2 reaches"));
     assert_int_equal(kent_marcher_advance(m.marcher, 100, &trace, &again), 0);
     assert_string_equal(again.what, err.what);
-    for (size_t i = 0; i < trace.count; i++)
+    for (size_t i = 0; i < trace.count; i++) {
         assert_true(isfinite(trace.head[i]));
+    }
     march_clear(&m);
     kent_build_clear(&b);
 }
