@@ -67,6 +67,7 @@ static double pipe_weight(const kent_pipe *p, double gravity)
     return PI * mean * p->wall * p->material_density * gravity;
 }
 
+/* A ratio matters unless what it multiplies is stated to be nil. */
 static unsigned soil_lacks(const kent_soil *s, bool bears)
 {
     unsigned lack = 0;
@@ -74,10 +75,11 @@ static unsigned soil_lacks(const kent_soil *s, bool bears)
     if (isnan(s->unit_weight)) lack |= KENT_LACK_UNIT_WEIGHT;
     if (isnan(s->friction_angle)) lack |= KENT_LACK_FRICTION_ANGLE;
     if (isnan(s->cohesion)) lack |= KENT_LACK_COHESION;
-    if (isnan(s->friction_ratio) && s->friction_angle > 0.0) {
+    if (isnan(s->friction_ratio) && !(s->friction_angle <= 0.0)) {
         lack |= KENT_LACK_FRICTION_RATIO;
     }
-    if (isnan(s->adhesion_ratio) && s->cohesion > 0.0) lack |= KENT_LACK_ADHESION_RATIO;
+    if (isnan(s->adhesion_ratio) && !(s->cohesion <= 0.0))
+        lack |= KENT_LACK_ADHESION_RATIO;
     if (isnan(s->passive_ratio) && bears) lack |= KENT_LACK_PASSIVE_RATIO;
     return lack;
 }

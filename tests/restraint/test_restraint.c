@@ -421,6 +421,17 @@ static void missing_soil_values_are_named_and_no_length_is_given(void **state)
     assert_true(isnan(h->restrained_length) != 0);
     kent_hand_expect(h, "soil 'till' lacks friction_ratio, passive_ratio");
     finish(&b, r);
+
+    b = main_of_five();
+    kent_soil *till = &b.model->soils[0];
+    till->unit_weight = till->friction_angle = till->cohesion = (double)NAN;
+    till->friction_ratio = till->adhesion_ratio = till->passive_ratio = (double)NAN;
+    kent_build_derive(&b);
+    r = kent_hand_size(&b, TEST, 1);
+    kent_hand_expect(holding_of(&b, r, "C"), /* all of them in one go */
+                     "lacks unit_weight, friction_angle, cohesion, friction_ratio, "
+                     "adhesion_ratio, passive_ratio");
+    finish(&b, r);
 }
 
 static void adhesion_is_not_asked_for_where_there_is_no_cohesion(void **state)
