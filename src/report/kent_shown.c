@@ -273,12 +273,17 @@ bool kent_shown_not_held(const kent_holding *holding)
            holding->chosen != KENT_NO_RESTRAINT;
 }
 
-/* In a word or two, why nothing holds it; the note under the table says the rest. */
-static kent_shown refusal(const kent_model *m, const kent_fitting *fitting)
+/* In a word or two, why nothing holds it; the note under the table says the rest. A
+ * soil's name that is too long for a narrow table is left to the note. */
+static kent_shown refusal(const kent_model *m, const kent_fitting *fitting,
+                          kent_room room)
 {
+    enum { SHORT = 12 };
     if (fitting->soil < 0) return shown("none: no soil");
-    if (m->soils[fitting->soil].unreliable) {
-        return shown("none: %s", m->soils[fitting->soil].id);
+    const kent_soil *soil = &m->soils[fitting->soil];
+    if (soil->unreliable) {
+        const bool fits = room == KENT_ROOMY || kent_text_columns(soil->id) <= SHORT;
+        return shown("none%s%s", fits ? ": " : "", fits ? soil->id : "");
     }
     if (isnan(fitting->cover)) return shown("none: no cover");
     return shown("none");
@@ -316,7 +321,7 @@ kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
         return shown(fitting->within_deflection ? "joint takes it" : "not needed");
     }
     if (holding->chosen == KENT_NO_RESTRAINT) return shown("none asked");
-    if (!holding->held) return refusal(m, fitting);
+    if (!holding->held) return refusal(m, fitting, room);
     if (part->face) {
         const double sides[3] = {b->face.width, b->face.height, b->face_thickness};
         return three_sides("face ", sides, system, room);
