@@ -78,8 +78,9 @@ static unsigned soil_lacks(const kent_soil *s, bool bears)
     if (isnan(s->friction_ratio) && !(s->friction_angle <= 0.0)) {
         lack |= KENT_LACK_FRICTION_RATIO;
     }
-    if (isnan(s->adhesion_ratio) && !(s->cohesion <= 0.0))
+    if (isnan(s->adhesion_ratio) && !(s->cohesion <= 0.0)) {
         lack |= KENT_LACK_ADHESION_RATIO;
+    }
     if (isnan(s->passive_ratio) && bears) lack |= KENT_LACK_PASSIVE_RATIO;
     return lack;
 }
