@@ -374,6 +374,7 @@ done:
     kent_complaints_sort(complaints);
     if (f) {
         kent_reader_clear(&f->reader);
+        kent_units_free(f->reader.units);
         kent_model_free(f->model);
     }
     free(f);

@@ -361,16 +361,16 @@ static void complain_of_twins(const kent_reader *r, const char *folder,
     }
 }
 
-static kent_status read_file(const char *folder, const char *name, kent_catalogue *c,
-                             kent_complaints *complaints, kent_error *err)
+static kent_status read_file(const char *folder, const char *name, kent_units *units,
+                             kent_catalogue *c, kent_complaints *complaints,
+                             kent_error *err)
 {
     char path[1024];
     kent_tree *tree = NULL;
-    kent_reader r = {.complaints = complaints};
+    kent_reader r = {.units = units, .complaints = complaints};
     (void)snprintf(path, sizeof path, "%s/%s", folder, name);
 
     kent_status status = kent_tree_read(path, &tree, complaints, err);
-    if (status == KENT_OK) status = kent_units_new(&r.units, err);
     if (status != KENT_OK) goto done;
     r.tree = tree;
     kent_catalogue_shelve(c, &r);
@@ -397,13 +397,16 @@ kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
 {
     const size_t before = complaints->count;
     kent_reader all = {.complaints = complaints};
+    kent_units *units = NULL;
     kent_status status = KENT_OK;
     kent_catalogue *c = kent_alloc(1, sizeof *c);
     if (!c) return kent_error_nomem(err);
     if (!folder) folder = usual_folder();
+    status = kent_units_new(&units, err);
+    if (status != KENT_OK) goto done;
 
     for (size_t i = 0; i < sizeof FILES / sizeof FILES[0]; i++) {
-        status = read_file(folder, FILES[i], c, complaints, err);
+        status = read_file(folder, FILES[i], units, c, complaints, err);
         if (status == KENT_E_IO || status == KENT_E_NOMEM) goto done;
     }
     kent_catalogue_shelve(c, &all);
@@ -416,6 +419,7 @@ kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
     c = NULL;
 done:
     kent_reader_clear(&all);
+    kent_units_free(units);
     kent_catalogue_free(c);
     return status;
 }

@@ -13,21 +13,36 @@
 
 /* One macro per kind of value, so that a row holds only what differs. */
 #define QUANTITY(g, k, kind, range, fallback, says)                                    \
-    {g, k, KENT_VALUE_QUANTITY, kind, range, NULL, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_QUANTITY, kind, range, NULL, fallback, "0.1", says            \
+    }
 #define QUANTITY_OR(g, k, kind, range, word, fallback, says)                           \
-    {g, k, KENT_VALUE_QUANTITY, kind, range, word, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_QUANTITY, kind, range, word, fallback, "0.1", says            \
+    }
 #define EITHER(g, k, kind, range, fallback, says)                                      \
-    {g, k, KENT_VALUE_EITHER, kind, range, NULL, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_EITHER, kind, range, NULL, fallback, "0.1", says              \
+    }
 #define NUMBER(g, k, range, fallback, says)                                            \
-    {g, k, KENT_VALUE_NUMBER, KENT_RATIO, range, NULL, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_NUMBER, KENT_RATIO, range, NULL, fallback, "0.1", says        \
+    }
 #define COUNT(g, k, range, fallback, says)                                             \
-    {g, k, KENT_VALUE_COUNT, KENT_RATIO, range, NULL, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_COUNT, KENT_RATIO, range, NULL, fallback, "0.1", says         \
+    }
 #define PLAIN(value, g, k, words, fallback, says)                                      \
-    {g, k, value, KENT_RATIO, NO_LIMIT, words, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, value, KENT_RATIO, NO_LIMIT, words, fallback, "0.1", says                \
+    }
 #define SWITCH(g, k, fallback, says)                                                   \
     PLAIN(KENT_VALUE_SWITCH, g, k, NULL, fallback, says)
 #define TEXT(g, k, bytes, fallback, says)                                              \
-    {g, k, KENT_VALUE_TEXT, KENT_RATIO, 0.0, bytes, false, NULL, fallback, "0.1", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_TEXT, KENT_RATIO, 0.0, bytes, false, NULL, fallback, "0.1",   \
+            says                                                                       \
+    }
 #define ID(g, k, fallback, says)      PLAIN(KENT_VALUE_ID, g, k, NULL, fallback, says)
 #define REF(g, k, to, fallback, says) PLAIN(KENT_VALUE_REF, g, k, to, fallback, says)
 #define WORD(g, k, words, fallback, says)                                              \
@@ -41,950 +56,482 @@
     PLAIN(KENT_VALUE_VECTOR, g, k, NULL, fallback, says)
 /* Named in the format, refused by this version. */
 #define LATER(g, k, says)                                                              \
-    {g, k, KENT_VALUE_TEXT, KENT_RATIO, NO_LIMIT, NULL, "none", "later", says},
+    {                                                                                  \
+        g, k, KENT_VALUE_TEXT, KENT_RATIO, NO_LIMIT, NULL, "none", "later", says       \
+    }
 
 #define SOIL_VALUES(g, bearing)                                                        \
     QUANTITY(g, "allowable_bearing", KENT_STRESS, WITHIN(0.0, 5e7), bearing,           \
-             "allowable horizontal bearing; 0: none can be relied on")                 \
-    NUMBER(g, "factor_inside", WITHIN(1.0, 10.0), "1.0",                               \
-           "safety factor already inside allowable_bearing")                           \
-    QUANTITY(g, "vertical_bearing", KENT_STRESS, WITHIN(0.0, 5e7),                     \
-             "allowable_bearing", "allowable bearing under a base")                    \
-    QUANTITY(g, "unit_weight", KENT_UNIT_WEIGHT, WITHIN(5e3, 3e4), "none",             \
-             "weight of the soil in place")                                            \
-    QUANTITY(g, "friction_angle", KENT_ANGLE, WITHIN(0.0, 0.95993108859688127),        \
-             "none", "angle of internal friction")                                     \
-    QUANTITY(g, "cohesion", KENT_STRESS, WITHIN(0.0, 1e6), "none", "cohesion")         \
-    NUMBER(g, "friction_ratio", WITHIN(0.0, 1.0), "none",                              \
-           "pipe-to-soil friction angle over friction angle (restrained length)")      \
-    NUMBER(g, "adhesion_ratio", WITHIN(0.0, 1.0), "none",                              \
-           "pipe-to-soil adhesion over cohesion (restrained length)")                  \
-    NUMBER(g, "passive_ratio", WITHIN(0.0, 1.0), "none",                               \
-           "share of the passive pressure mobilised (restrained length)")              \
-    SWITCH(g, "unreliable", "false", "peat, fill: no restraint may count on it")
+             "allowable horizontal bearing; 0: none can be relied on"),                \
+        NUMBER(g, "factor_inside", WITHIN(1.0, 10.0), "1.0",                           \
+               "safety factor already inside allowable_bearing"),                      \
+        QUANTITY(g, "vertical_bearing", KENT_STRESS, WITHIN(0.0, 5e7),                 \
+                 "allowable_bearing", "allowable bearing under a base"),               \
+        QUANTITY(g, "unit_weight", KENT_UNIT_WEIGHT, WITHIN(5e3, 3e4), "none",         \
+                 "weight of the soil in place"),                                       \
+        QUANTITY(g, "friction_angle", KENT_ANGLE, WITHIN(0.0, 0.95993108859688127),    \
+                 "none", "angle of internal friction"),                                \
+        QUANTITY(g, "cohesion", KENT_STRESS, WITHIN(0.0, 1e6), "none", "cohesion"),    \
+        NUMBER(g, "friction_ratio", WITHIN(0.0, 1.0), "none",                          \
+               "pipe-to-soil friction angle over friction angle (restrained length)"), \
+        NUMBER(g, "adhesion_ratio", WITHIN(0.0, 1.0), "none",                          \
+               "pipe-to-soil adhesion over cohesion (restrained length)"),             \
+        NUMBER(g, "passive_ratio", WITHIN(0.0, 1.0), "none",                           \
+               "share of the passive pressure mobilised (restrained length)"),         \
+        SWITCH(g, "unreliable", "false", "peat, fill: no restraint may count on it")
 
 #define RULE_VALUES(g, left_out)                                                       \
     NUMBER(g, "safety_factor", WITHIN(1.0, 10.0), left_out,                            \
-           "factor on the thrust where a case states none of its own")                 \
-    NUMBER(g, "height_to_depth", BETWEEN(0.0, 1.0), left_out,                          \
-           "most height of a block over the depth of its base")                        \
-    NUMBER(g, "width_to_height_least", WITHIN(0.1, 10.0), left_out,                    \
-           "least width of a block over its height")                                   \
-    NUMBER(g, "width_to_height_most", WITHIN(0.1, 20.0), left_out,                     \
-           "most width of a block over its height")                                    \
-    QUANTITY(g, "least_thickness", KENT_LENGTH, BETWEEN(0.0, 10.0), left_out,          \
-             "least thickness of a block")                                             \
-    QUANTITY(g, "least_height", KENT_LENGTH, BETWEEN(0.0, 10.0), left_out,             \
-             "least height of a block")                                                \
-    QUANTITY(g, "side_step", KENT_LENGTH, BETWEEN(0.0, 1.0), left_out,                 \
-             "sides are rounded up to multiples of it")                                \
-    QUANTITY(g, "least_cover", KENT_LENGTH, WITHIN(0.0, 10.0), left_out,               \
-             "no bearing block where the pipe has less cover")                         \
-    QUANTITY(g, "concrete_unit_weight", KENT_UNIT_WEIGHT, WITHIN(1.5e4, 4e4),          \
-             left_out, "weight of concrete")                                           \
-    QUANTITY(g, "water_unit_weight", KENT_UNIT_WEIGHT, WITHIN(9e3, 1.1e4), left_out,   \
-             "weight of ground water")                                                 \
-    NUMBER(g, "wrapped_ratio", BETWEEN(0.0, 1.0), left_out,                            \
-           "friction of a sleeved pipe over that of a bare one")                       \
-    QUANTITY(g, "largest_volume", KENT_VOLUME, BETWEEN(0.0, 1e4), left_out,            \
-             "a block larger than this is refused")
+           "factor on the thrust where a case states none of its own"),                \
+        NUMBER(g, "height_to_depth", BETWEEN(0.0, 1.0), left_out,                      \
+               "most height of a block over the depth of its base"),                   \
+        NUMBER(g, "width_to_height_least", WITHIN(0.1, 10.0), left_out,                \
+               "least width of a block over its height"),                              \
+        NUMBER(g, "width_to_height_most", WITHIN(0.1, 20.0), left_out,                 \
+               "most width of a block over its height"),                               \
+        QUANTITY(g, "least_thickness", KENT_LENGTH, BETWEEN(0.0, 10.0), left_out,      \
+                 "least thickness of a block"),                                        \
+        QUANTITY(g, "least_height", KENT_LENGTH, BETWEEN(0.0, 10.0), left_out,         \
+                 "least height of a block"),                                           \
+        QUANTITY(g, "side_step", KENT_LENGTH, BETWEEN(0.0, 1.0), left_out,             \
+                 "sides are rounded up to multiples of it"),                           \
+        QUANTITY(g, "least_cover", KENT_LENGTH, WITHIN(0.0, 10.0), left_out,           \
+                 "no bearing block where the pipe has less cover"),                    \
+        QUANTITY(g, "concrete_unit_weight", KENT_UNIT_WEIGHT, WITHIN(1.5e4, 4e4),      \
+                 left_out, "weight of concrete"),                                      \
+        QUANTITY(g, "water_unit_weight", KENT_UNIT_WEIGHT, WITHIN(9e3, 1.1e4),         \
+                 left_out, "weight of ground water"),                                  \
+        NUMBER(g, "wrapped_ratio", BETWEEN(0.0, 1.0), left_out,                        \
+               "friction of a sleeved pipe over that of a bare one"),                  \
+        QUANTITY(g, "largest_volume", KENT_VOLUME, BETWEEN(0.0, 1e4), left_out,        \
+                 "a block larger than this is refused")
 
 #define PROVENANCE(g)                                                                  \
-    TEXT(g, "source", 199, "required", "where the values come from")                   \
-    WORD(g, "status", "seen|memory|derived|common practice", "required",               \
-         "how far the values can be trusted")
+    TEXT(g, "source", 199, "required", "where the values come from"),                  \
+        WORD(g, "status", "seen|memory|derived|common practice", "required",           \
+             "how far the values can be trusted")
 
 #define JOINTS   "push-on|mechanical|flanged|welded|fused|restrained"
 #define SUPPORTS "flexible-joints|fixed-upstream|fixed-throughout"
 
 const kent_key KENT_KEYS[] = {
     /* ---- a case --------------------------------------------------------------- */
-    COUNT("case", "format", WITHIN(1.0, 1.0), "required", "version of this format")
-        TEXT("case", "title", 159, "the file's name",
-             "what the main is called on sheets") WORD("case", "units", "SI|US", "SI",
-                                                       "units of what is displayed")
-            GROUP("case", "project", "project", "none",
-                  "numbers and names for the sheets")
-                GROUP(
-                    "case", "water",
-                    "water", "none", "properties of the water") GROUP("case", "site",
-                                                                      "site", "none", "altitude and gravity") LIST("case", "points", "point", "none", "survey points of the main") LIST("case", "pipes", "pipe", "none", "pipes, each along a route of points") LIST("case", "fixed_levels", "fixed_level", "none", "reservoirs: levels that hold") LIST("case", "outflows", "outflow", "none", "flows drawn from the main") LIST("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                  "valves", "valve", "none", "valves, in line or discharging") LIST("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "scenarios", "scenario", "none", "what happens, each from steady flow") LIST("case", "soils", "soil", "none", "soils of the site") GROUP("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "ground",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "ground",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "none", "ground where a point says nothing else") LIST("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "fittings",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "fitting",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "none", "refines fittings found from geometry, or states one by its ports") GROUP("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "loads",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "loads",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "none", "test, static level and factors") GROUP("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "solver",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "solver", "none", "how the surge is computed") GROUP("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "design_rules",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "design_rules",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "rules of block design") LATER("case", "pumps", "pumps") LATER("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "check_valves",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "check valves") LATER("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "surge_tanks",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "open surge tanks") LATER("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "one_way_surge_tanks", "surge tanks that only feed the main") LATER("case", "air_vessels", "air vessels") LATER("case", "relief_valves", "relief valves") LATER("case", "air_valves", "air valves") LATER("case", "control_valves", "pressure reducing and sustaining valves") LATER("case", "states", "several steady states") LATER("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "ground_zones",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "ground by chainage") LATER("case",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                            "points_file",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                            "points from a table") LATER("case", "pipes_file", "pipes from a table")
+    COUNT("case", "format", WITHIN(1.0, 1.0), "required", "version of this format"),
+    TEXT("case", "title", 159, "the file's name", "what the main is called on sheets"),
+    WORD("case", "units", "SI|US", "SI", "units of what is displayed"),
+    GROUP("case", "project", "project", "none", "numbers and names for the sheets"),
+    GROUP("case", "water", "water", "none", "properties of the water"),
+    GROUP("case", "site", "site", "none", "altitude and gravity"),
+    LIST("case", "points", "point", "none", "survey points of the main"),
+    LIST("case", "pipes", "pipe", "none", "pipes, each along a route of points"),
+    LIST("case", "fixed_levels", "fixed_level", "none", "reservoirs: levels that hold"),
+    LIST("case", "outflows", "outflow", "none", "flows drawn from the main"),
+    LIST("case", "valves", "valve", "none", "valves, in line or discharging"),
+    LIST("case", "scenarios", "scenario", "none",
+         "what happens, each from steady flow"),
+    LIST("case", "soils", "soil", "none", "soils of the site"),
+    GROUP("case", "ground", "ground", "none", "ground where a point says nothing else"),
+    LIST("case", "fittings", "fitting", "none",
+         "refines fittings found from geometry, or states one by its ports"),
+    GROUP("case", "loads", "loads", "none", "test, static level and factors"),
+    GROUP("case", "solver", "solver", "none", "how the surge is computed"),
+    GROUP("case", "design_rules", "design_rules", "none", "rules of block design"),
+    LATER("case", "pumps", "pumps"),
+    LATER("case", "check_valves", "check valves"),
+    LATER("case", "surge_tanks", "open surge tanks"),
+    LATER("case", "one_way_surge_tanks", "surge tanks that only feed the main"),
+    LATER("case", "air_vessels", "air vessels"),
+    LATER("case", "relief_valves", "relief valves"),
+    LATER("case", "air_valves", "air valves"),
+    LATER("case", "control_valves", "pressure reducing and sustaining valves"),
+    LATER("case", "states", "several steady states"),
+    LATER("case", "ground_zones", "ground by chainage"),
+    LATER("case", "points_file", "points from a table"),
+    LATER("case", "pipes_file", "pipes from a table"),
 
-                    TEXT(
-                        "project",
-                        "number", 63, "none",
-                        "project number") TEXT("project", "drawing", 63, "none",
-                                               "drawing number") TEXT("project",
-                                                                      "revision", 63,
-                                                                      "none",
-                                                                      "revision") TEXT("project", "designer", 63, "none",
-                                                                                       "who designed") TEXT("project", "checker", 63, "none", "who checked")
+    TEXT("project", "number", 63, "none", "project number"),
+    TEXT("project", "drawing", 63, "none", "drawing number"),
+    TEXT("project", "revision", 63, "none", "revision"),
+    TEXT("project", "designer", 63, "none", "who designed"),
+    TEXT("project", "checker", 63, "none", "who checked"),
 
-                        QUANTITY("water", "temperature",
-                                 KENT_TEMPERATURE, WITHIN(273.15, 373.15), "15 degC",
-                                 "gives every property that is not stated")
-                            QUANTITY("water", "density", KENT_DENSITY, WITHIN(500.0, 2000.0), "from temperature", "density") QUANTITY(
-                                "water",
-                                "bulk_modulus",
-                                KENT_MODULUS, WITHIN(1e8, 1e10),
-                                "from temperature",
-                                "adiabatic bulk modulus") QUANTITY("water", "viscosity",
-                                                                   KENT_VISCOSITY,
-                                                                   WITHIN(1e-5, 1.0), "from temperature",
-                                                                   "dynamic viscosity")
-                                QUANTITY("water", "vapour_pressure", KENT_PRESSURE,
-                                         WITHIN(0.0, 1.1e5),
-                                         "from temperature",
-                                         "vapour pressure, "
-                                         "absolute") LATER("w"
-                                                           "a"
-                                                           "t"
-                                                           "e"
-                                                           "r",
-                                                           "g"
-                                                           "a"
-                                                           "s"
-                                                           "_"
-                                                           "c"
-                                                           "o"
-                                                           "n"
-                                                           "t"
-                                                           "e"
-                                                           "n"
-                                                           "t",
-                                                           "f"
-                                                           "r"
-                                                           "e"
-                                                           "e"
-                                                           " "
-                                                           "g"
-                                                           "a"
-                                                           "s"
-                                                           " "
-                                                           "b"
-                                                           "y"
-                                                           " "
-                                                           "v"
-                                                           "o"
-                                                           "l"
-                                                           "u"
-                                                           "m"
-                                                           "e"
-                                                           " "
-                                                           "a"
-                                                           "t"
-                                                           " "
-                                                           "o"
-                                                           "n"
-                                                           "e"
-                                                           " "
-                                                           "a"
-                                                           "t"
-                                                           "m"
-                                                           "o"
-                                                           "s"
-                                                           "p"
-                                                           "h"
-                                                           "e"
-                                                           "r"
-                                                           "e")
+    QUANTITY("water", "temperature", KENT_TEMPERATURE, WITHIN(273.15, 373.15),
+             "15 degC", "gives every property that is not stated"),
+    QUANTITY("water", "density", KENT_DENSITY, WITHIN(500.0, 2000.0),
+             "from temperature", "density"),
+    QUANTITY("water", "bulk_modulus", KENT_MODULUS, WITHIN(1e8, 1e10),
+             "from temperature", "adiabatic bulk modulus"),
+    QUANTITY("water", "viscosity", KENT_VISCOSITY, WITHIN(1e-5, 1.0),
+             "from temperature", "dynamic viscosity"),
+    QUANTITY("water", "vapour_pressure", KENT_PRESSURE, WITHIN(0.0, 1.1e5),
+             "from temperature", "vapour pressure, absolute"),
+    LATER("water", "gas_content", "free gas by volume at one atmosphere"),
 
-                                    QUANTITY("site", "altitude", KENT_LENGTH, WITHIN(-500.0, 11000.0), "0 m", "gives the barometric pressure") QUANTITY(
-                                        "site",
-                                        "gravity", KENT_ACCELERATION, WITHIN(9.0, 10.0),
-                                        "9.80665 m/s^2",
-                                        "acceleration of gravity")
+    QUANTITY("site", "altitude", KENT_LENGTH, WITHIN(-500.0, 11000.0), "0 m",
+             "gives the barometric pressure"),
+    QUANTITY("site", "gravity", KENT_ACCELERATION, WITHIN(9.0, 10.0), "9.80665 m/s^2",
+             "acceleration of gravity"),
 
-                                        ID("point", "id", "required", "its name") QUANTITY(
-                                            "point",
-                                            "x", KENT_LENGTH,
-                                            WITHIN(-1e8, 1e8), "none", "east")
-                                            QUANTITY("point", "y", KENT_LENGTH,
-                                                     WITHIN(-1e8, 1e8),
-                                                     "none",
-                                                     "north") QUANTITY("point", "z",
-                                                                       KENT_LENGTH,
-                                                                       WITHIN(
-                                                                           -1000.0, 9000.0),
-                                                                       "required",
-                                                                       "level of the "
-                                                                       "pipe's "
-                                                                       "centre line")
-                                                QUANTITY(
-                                                    "point",
-                                                    "cover",
-                                                    KENT_LENGTH,
-                                                    WITHIN(0.0, 100.0),
-                                                    "the ground's", "ground to crown of the pipe")
-                                                    QUANTITY_OR(
-                                                        "point", "water_table",
-                                                        KENT_LENGTH,
-                                                        WITHIN(0.0, 1000.0), "none",
-                                                        "the ground's",
-                                                        "depth of ground water below "
-                                                        "ground") STATION("point", "station", "along the route", "its station")
-                                                        REF("point", "soil", "soil", "the ground's", "soil around it") SWITCH(
-                                                            "point", "record",
-                                                            "false",
-                                                            "keep its history")
+    ID("point", "id", "required", "its name"),
+    QUANTITY("point", "x", KENT_LENGTH, WITHIN(-1e8, 1e8), "none", "east"),
+    QUANTITY("point", "y", KENT_LENGTH, WITHIN(-1e8, 1e8), "none", "north"),
+    QUANTITY("point", "z", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "required",
+             "level of the pipe's centre line"),
+    QUANTITY("point", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "the ground's",
+             "ground to crown of the pipe"),
+    QUANTITY_OR("point", "water_table", KENT_LENGTH, WITHIN(0.0, 1000.0), "none",
+                "the ground's", "depth of ground water below ground"),
+    STATION("point", "station", "along the route", "its station"),
+    REF("point", "soil", "soil", "the ground's", "soil around it"),
+    SWITCH("point", "record", "false", "keep its history"),
 
-                                                            ID("pipe", "id", "required", "its name") LIST(
-                                                                "pipe",
-                                                                "route",
-                                                                "",
-                                                                "required", "ids of the points it runs through, in order") REF("pipe", "pipe_class", "pipe_class", "none", "row of the catalogue of pipes") REF("pipe",
-                                                                                                                                                                                                                "material", "material", "the class's", "row of the catalogue of materials") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                     "outside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0), "the class's", "outside diameter") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                        "inside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
-                                                                                                                                                                                                                                                                                                                                                                                                        "outside - 2 wall - 2 lining", "diameter inside the lining") QUANTITY("pipe", "wall_thickness", KENT_DIAMETER, BETWEEN(0.0, 2.0), "the class's", "nominal thickness of the structural wall") QUANTITY("pipe", "lining_thickness", KENT_DIAMETER, WITHIN(0.0, 0.5), "the class's, else 0 mm", "thickness of the lining") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "elastic_modulus", KENT_MODULUS, WITHIN(1e7, 1e12),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "the material's", "modulus of the wall") NUMBER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "poisson_ratio", WITHIN(0.0, 0.5),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "the material's",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "Poisson's ratio of the wall") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                 "roughness", KENT_DIAMETER, WITHIN(0.0, 0.1), "the material's", "equivalent sand roughness (Colebrook-White)") NUMBER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "hazen_williams_c", WITHIN(10.0, 200.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "Hazen-Williams coefficient, in place of roughness") NUMBER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "manning_n",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       0.001,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       0.1),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "Manning's n in s/m^(1/3), in place of roughness") NUMBER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "friction_factor",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             WITHIN(0.0, 1.0), "none", "fixed Darcy factor, in place of roughness") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "length",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             KENT_LENGTH, BETWEEN(0.0, 1e6), "from coordinates",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "length for the hydraulics") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "wave_speed",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   KENT_SPEED,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       10.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       2000.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "computed",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "speed of a pressure wave") WORD("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "axial_support", SUPPORTS, "by the joint", "how the pipe is held lengthwise, for the wave speed") WORD("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "wall_theory", "thick|thin", "thick", "form of the wave speed formula") WORD("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                        "joint", JOINTS, "push-on", "kind of joint") QUANTITY("pipe", "joint_deflection", KENT_ANGLE, WITHIN(0.0, 0.26179938779914941), "0 deg", "turn that a joint may take without a fitting") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "pipe_length",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          KENT_LENGTH, BETWEEN(0.0, 100.0), "none", "laying length of one pipe; restrained lengths are rounded up to it") NUMBER("pipe", "loss", WITHIN(0.0, 1e6), "0.0", "minor losses spread along it, K on its bore") QUANTITY("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "pressure_rating", KENT_PRESSURE, BETWEEN(0.0, 1e9),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "the class's",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "pressure the pipe is "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "rated for") LATER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "surge_rating",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "pressure rating under "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "surge") LATER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "test_rating",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "pressur"
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "e "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "rating "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "under "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "test") LATER("pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "creep",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "creep of a plastic wall")
+    ID("pipe", "id", "required", "its name"),
+    LIST("pipe", "route", "", "required",
+         "ids of the points it runs through, in order"),
+    REF("pipe", "pipe_class", "pipe_class", "none", "row of the catalogue of pipes"),
+    REF("pipe", "material", "material", "the class's",
+        "row of the catalogue of materials"),
+    QUANTITY("pipe", "outside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "the class's", "outside diameter"),
+    QUANTITY("pipe", "inside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "outside - 2 wall - 2 lining", "diameter inside the lining"),
+    QUANTITY("pipe", "wall_thickness", KENT_DIAMETER, BETWEEN(0.0, 2.0), "the class's",
+             "nominal thickness of the structural wall"),
+    QUANTITY("pipe", "lining_thickness", KENT_DIAMETER, WITHIN(0.0, 0.5),
+             "the class's, else 0 mm", "thickness of the lining"),
+    QUANTITY("pipe", "elastic_modulus", KENT_MODULUS, WITHIN(1e7, 1e12),
+             "the material's", "modulus of the wall"),
+    NUMBER("pipe", "poisson_ratio", WITHIN(0.0, 0.5), "the material's",
+           "Poisson's ratio of the wall"),
+    QUANTITY("pipe", "roughness", KENT_DIAMETER, WITHIN(0.0, 0.1), "the material's",
+             "equivalent sand roughness (Colebrook-White)"),
+    NUMBER("pipe", "hazen_williams_c", WITHIN(10.0, 200.0), "none",
+           "Hazen-Williams coefficient, in place of roughness"),
+    NUMBER("pipe", "manning_n", WITHIN(0.001, 0.1), "none",
+           "Manning's n in s/m^(1/3), in place of roughness"),
+    NUMBER("pipe", "friction_factor", WITHIN(0.0, 1.0), "none",
+           "fixed Darcy factor, in place of roughness"),
+    QUANTITY("pipe", "length", KENT_LENGTH, BETWEEN(0.0, 1e6), "from coordinates",
+             "length for the hydraulics"),
+    QUANTITY("pipe", "wave_speed", KENT_SPEED, WITHIN(10.0, 2000.0), "computed",
+             "speed of a pressure wave"),
+    WORD("pipe", "axial_support", SUPPORTS, "by the joint",
+         "how the pipe is held lengthwise, for the wave speed"),
+    WORD("pipe", "wall_theory", "thick|thin", "thick",
+         "form of the wave speed formula"),
+    WORD("pipe", "joint", JOINTS, "push-on", "kind of joint"),
+    QUANTITY("pipe", "joint_deflection", KENT_ANGLE, WITHIN(0.0, 0.26179938779914941),
+             "0 deg", "turn that a joint may take without a fitting"),
+    QUANTITY("pipe", "pipe_length", KENT_LENGTH, BETWEEN(0.0, 100.0), "none",
+             "laying length of one pipe; restrained lengths are rounded up to it"),
+    NUMBER("pipe", "loss", WITHIN(0.0, 1e6), "0.0",
+           "minor losses spread along it, K on its bore"),
+    QUANTITY("pipe", "pressure_rating", KENT_PRESSURE, BETWEEN(0.0, 1e9), "the class's",
+             "pressure the pipe is rated for"),
+    LATER("pipe", "surge_rating", "pressure rating under surge"),
+    LATER("pipe", "test_rating", "pressure rating under test"),
+    LATER("pipe", "creep", "creep of a plastic wall"),
 
-                                                                REF("fixed_level", "at",
-                                                                    "point",
-                                                                    "required",
-                                                                    "point where it "
-                                                                    "stands") QUANTITY("fixed_level", "level",
-                                                                                       KENT_LENGTH,
-                                                                                       WITHIN(
-                                                                                           -1000.0,
-                                                                                           9000.0),
-                                                                                       "required",
-                                                                                       "water level")
-                                                                    NUMBER(
-                                                                        "fixed_level",
-                                                                        "loss",
-                                                                        WITHIN(0.0,
-                                                                               1e6),
-                                                                        "0.0",
-                                                                        "loss K on the "
-                                                                        "pipe's bore "
-                                                                        "of "
-                                                                        "flow out of "
-                                                                        "it")
+    REF("fixed_level", "at", "point", "required", "point where it stands"),
+    QUANTITY("fixed_level", "level", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "required",
+             "water level"),
+    NUMBER("fixed_level", "loss", WITHIN(0.0, 1e6), "0.0",
+           "loss K on the pipe's bore of flow out of it"),
 
-                                                                        REF("outflow",
-                                                                            "at",
-                                                                            "point",
-                                                                            "required",
-                                                                            "point "
-                                                                            "where "
-                                                                            "it is "
-                                                                            "drawn")
-                                                                            QUANTITY(
-                                                                                "outflo"
-                                                                                "w",
-                                                                                "flow",
-                                                                                KENT_FLOW,
-                                                                                WITHIN(
-                                                                                    -1000.0,
-                                                                                    1000.0),
-                                                                                "requir"
-                                                                                "ed",
-                                                                                "flow "
-                                                                                "out "
-                                                                                "of "
-                                                                                "the "
-                                                                                "main; "
-                                                                                "negati"
-                                                                                "ve: "
-                                                                                "into "
-                                                                                "it") SWITCH("outflow",
-                                                                                             "pressure_dependent",
-                                                                                             "false",
-                                                                                             "flow falls with the pressure")
-                                                                                QUANTITY(
-                                                                                    "ou"
-                                                                                    "tf"
-                                                                                    "lo"
-                                                                                    "w",
-                                                                                    "fu"
-                                                                                    "ll"
-                                                                                    "_"
-                                                                                    "pr"
-                                                                                    "es"
-                                                                                    "su"
-                                                                                    "r"
-                                                                                    "e",
-                                                                                    KENT_PRESSURE,
-                                                                                    BETWEEN(
-                                                                                        0.0,
-                                                                                        1e8),
-                                                                                    "no"
-                                                                                    "n"
-                                                                                    "e",
-                                                                                    "pr"
-                                                                                    "es"
-                                                                                    "su"
-                                                                                    "re"
-                                                                                    " a"
-                                                                                    "t "
-                                                                                    "wh"
-                                                                                    "ic"
-                                                                                    "h "
-                                                                                    "th"
-                                                                                    "e "
-                                                                                    "wh"
-                                                                                    "ol"
-                                                                                    "e "
-                                                                                    "fl"
-                                                                                    "ow"
-                                                                                    " "
-                                                                                    "is"
-                                                                                    " "
-                                                                                    "dr"
-                                                                                    "aw"
-                                                                                    "n,"
-                                                                                    " i"
-                                                                                    "f "
-                                                                                    "pr"
-                                                                                    "es"
-                                                                                    "su"
-                                                                                    "re"
-                                                                                    "_"
-                                                                                    "de"
-                                                                                    "pe"
-                                                                                    "nd"
-                                                                                    "en"
-                                                                                    "t")
+    REF("outflow", "at", "point", "required", "point where it is drawn"),
+    QUANTITY("outflow", "flow", KENT_FLOW, WITHIN(-1000.0, 1000.0), "required",
+             "flow out of the main; negative: into it"),
+    SWITCH("outflow", "pressure_dependent", "false", "flow falls with the pressure"),
+    QUANTITY("outflow", "full_pressure", KENT_PRESSURE, BETWEEN(0.0, 1e8), "none",
+             "pressure at which the whole flow is drawn, if pressure_dependent"),
 
-                                                                                    ID("val"
-                                                                                       "ve",
-                                                                                       "id",
-                                                                                       "req"
-                                                                                       "uir"
-                                                                                       "ed",
-                                                                                       "its"
-                                                                                       " na"
-                                                                                       "me") REF("valve",
-                                                                                                 "at",
-                                                                                                 "point",
-                                                                                                 "required", "point where it stands") REF("valve", "type", "valve_type", "linear if no characteristic", "row of the catalogue of valves, or \"linear\"") QUANTITY("valve",
-                                                                                                                                                                                                                                                                  "size", KENT_DIAMETER, BETWEEN(0.0, 20.0),
-                                                                                                                                                                                                                                                                  "required", "nominal bore, which loss refers to") NUMBER("valve", "loss", BETWEEN(0.0, 1e9),
-                                                                                                                                                                                                                                                                                                                           "the type's", "K at full opening") NUMBER("valve",
-                                                                                                                                                                                                                                                                                                                                                                     "kv",
-                                                                                                                                                                                                                                                                                                                                                                     BETWEEN(0.0, 1e8), "none", "m3/h at 1 bar at full opening, in place of loss") NUMBER("valve", "cv", BETWEEN(0.0, 1e8), "none", "US gallon/min at 1 psi at full opening, in place of loss") QUANTITY("valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "flow",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         KENT_FLOW,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         BETWEEN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             0.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             1000.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "flow it passes in the steady state, in place of loss") LIST("valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "characteristic", "",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "the type's",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "pairs (opening, K), at least two, in place of type") NUMBER("valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "opening",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       0.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       1.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "1.0", "opening in the steady state") QUANTITY("valve", "discharge_level", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "level it discharges to, at the end of a pipe")
+    ID("valve", "id", "required", "its name"),
+    REF("valve", "at", "point", "required", "point where it stands"),
+    REF("valve", "type", "valve_type", "linear if no characteristic",
+        "row of the catalogue of valves, or \"linear\""),
+    QUANTITY("valve", "size", KENT_DIAMETER, BETWEEN(0.0, 20.0), "required",
+             "nominal bore, which loss refers to"),
+    NUMBER("valve", "loss", BETWEEN(0.0, 1e9), "the type's", "K at full opening"),
+    NUMBER("valve", "kv", BETWEEN(0.0, 1e8), "none",
+           "m3/h at 1 bar at full opening, in place of loss"),
+    NUMBER("valve", "cv", BETWEEN(0.0, 1e8), "none",
+           "US gallon/min at 1 psi at full opening, in place of loss"),
+    QUANTITY("valve", "flow", KENT_FLOW, BETWEEN(0.0, 1000.0), "none",
+             "flow it passes in the steady state, in place of loss"),
+    LIST("valve", "characteristic", "", "the type's",
+         "pairs (opening, K), at least two, in place of type"),
+    NUMBER("valve", "opening", WITHIN(0.0, 1.0), "1.0", "opening in the steady state"),
+    QUANTITY("valve", "discharge_level", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "none",
+             "level it discharges to, at the end of a pipe"),
 
-                                                                                        ID("scenario", "id", "required", "its name, also in file names") TEXT(
-                                                                                            "scenario",
-                                                                                            "title",
-                                                                                            159,
-                                                                                            "its id",
-                                                                                            "what happens, for people")
-                                                                                            QUANTITY("scenario",
-                                                                                                     "duration",
-                                                                                                     KENT_TIME,
-                                                                                                     BETWEEN(0.0, 1e6), "required", "time simulated") WORD("scenario", "class", "recurring|occasional|exceptional", "occasional", "how often it may happen, for its factor") LIST("scenario", "events",
-                                                                                                                                                                                                                                                                                  "event",
-                                                                                                                                                                                                                                                                                  "none", "what moves, and when") LATER("scenario", "states", "steady states it starts from") LATER("scenario",
-                                                                                                                                                                                                                                                                                                                                                                                    "without",
-                                                                                                                                                                                                                                                                                                                                                                                    "devices left out")
+    ID("scenario", "id", "required", "its name, also in file names"),
+    TEXT("scenario", "title", 159, "its id", "what happens, for people"),
+    QUANTITY("scenario", "duration", KENT_TIME, BETWEEN(0.0, 1e6), "required",
+             "time simulated"),
+    WORD("scenario", "class", "recurring|occasional|exceptional", "occasional",
+         "how often it may happen, for its factor"),
+    LIST("scenario", "events", "event", "none", "what moves, and when"),
+    LATER("scenario", "states", "steady states it starts from"),
+    LATER("scenario", "without", "devices left out"),
 
-                                                                                                REF("event",
-                                                                                                    "valve", "valve", "none", "valve that moves") REF("event", "outflow", "outflow", "none", "point of the outflow that changes") QUANTITY("event", "start_time", KENT_TIME, WITHIN(0.0, 1e6), "0 s", "when the change starts") QUANTITY("event",
-                                                                                                                                                                                                                                                                                                                                         "ramp_time",
-                                                                                                                                                                                                                                                                                                                                         KENT_TIME,
-                                                                                                                                                                                                                                                                                                                                         WITHIN(
-                                                                                                                                                                                                                                                                                                                                             0.0,
-                                                                                                                                                                                                                                                                                                                                             1e6),
-                                                                                                                                                                                                                                                                                                                                         "none",
-                                                                                                                                                                                                                                                                                                                                         "time the change takes") EITHER("event", "to", KENT_FLOW,
-                                                                                                                                                                                                                                                                                                                                                                         WITHIN(0.0, 1.0), "none", "opening (a number) or flow (with unit) at the end of the change") LIST("event",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "opening_law",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "pairs (time from start_time, opening), in place of ramp_time and to") LATER("event", "flow_law", "pairs (time, flow) of an outflow") LATER("event", "pump", "pump that trips, starts or stops") LATER("event",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "action",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "trip, start or stop") LATER("event",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                               "how_many", "pumps concerned")
-                                                                                                    LATER("event", "fixed_level", "reservoir whose level changes") LATER(
-                                                                                                        "event",
-                                                                                                        "level_law",
-                                                                                                        "pairs (time, level)") LATER("event",
-                                                                                                                                     "period",
-                                                                                                                                     "period of a law that repeats")
-                                                                                                        LATER("event", "burst", "point where the pipe bursts") LATER(
-                                                                                                            "event",
-                                                                                                            "area",
-                                                                                                            "area of the burst")
+    REF("event", "valve", "valve", "none", "valve that moves"),
+    REF("event", "outflow", "outflow", "none", "point of the outflow that changes"),
+    QUANTITY("event", "start_time", KENT_TIME, WITHIN(0.0, 1e6), "0 s",
+             "when the change starts"),
+    QUANTITY("event", "ramp_time", KENT_TIME, WITHIN(0.0, 1e6), "none",
+             "time the change takes"),
+    EITHER("event", "to", KENT_FLOW, WITHIN(0.0, 1.0), "none",
+           "opening (a number) or flow (with unit) at the end of the change"),
+    LIST("event", "opening_law", "", "none",
+         "pairs (time from start_time, opening), in place of ramp_time and to"),
+    LATER("event", "flow_law", "pairs (time, flow) of an outflow"),
+    LATER("event", "pump", "pump that trips, starts or stops"),
+    LATER("event", "action", "trip, start or stop"),
+    LATER("event", "how_many", "pumps concerned"),
+    LATER("event", "fixed_level", "reservoir whose level changes"),
+    LATER("event", "level_law", "pairs (time, level)"),
+    LATER("event", "period", "period of a law that repeats"),
+    LATER("event", "burst", "point where the pipe bursts"),
+    LATER("event", "area", "area of the burst"),
 
-                                                                                                            ID("soil",
-                                                                                                               "id",
-                                                                                                               "required",
-                                                                                                               "its name") REF("soil",
-                                                                                                                               "from",
-                                                                                                                               "soil_row",
-                                                                                                                               "none",
-                                                                                                                               "row of the catalogue of soils whose values hold where none is given here") TEXT("soil", "source", 199, "given in the case", "report the values come from") SOIL_VALUES("soil",
-                                                                                                                                                                                                                                                                                                       "required unless from")
+    ID("soil", "id", "required", "its name"),
+    REF("soil", "from", "soil_row", "none",
+        "row of the catalogue of soils whose values hold where none is given here"),
+    TEXT("soil", "source", 199, "given in the case", "report the values come from"),
+    SOIL_VALUES("soil", "required unless from"),
 
-                                                                                                                REF("ground", "soil", "soil", "none", "soil around the main") QUANTITY("ground",
-                                                                                                                                                                                       "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "none", "ground to crown of the pipe") QUANTITY_OR("ground",
-                                                                                                                                                                                                                                                                                    "water_table",
-                                                                                                                                                                                                                                                                                    KENT_LENGTH,
-                                                                                                                                                                                                                                                                                    WITHIN(0.0, 1000.0), "none", "none", "depth of ground water below ground")
-                                                                                                                    SWITCH(
-                                                                                                                        "ground",
-                                                                                                                        "wrapped",
-                                                                                                                        "false",
-                                                                                                                        "pipes are in polyethylene sleeves")
+    REF("ground", "soil", "soil", "none", "soil around the main"),
+    QUANTITY("ground", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "none",
+             "ground to crown of the pipe"),
+    QUANTITY_OR("ground", "water_table", KENT_LENGTH, WITHIN(0.0, 1000.0), "none",
+                "none", "depth of ground water below ground"),
+    SWITCH("ground", "wrapped", "false", "pipes are in polyethylene sleeves"),
 
-                                                                                                                        REF("fitting",
-                                                                                                                            "at",
-                                                                                                                            "point",
-                                                                                                                            "none", "point of a fitting found from geometry") ID("fitting",
-                                                                                                                                                                                 "id",
-                                                                                                                                                                                 "none", "name of a fitting stated by its ports") WORD("fitting",
-                                                                                                                                                                                                                                       "type", "bend|tee|wye|cross|reducer|dead-end|valve|straight", "from geometry", "kind of fitting") QUANTITY("fitting",
-                                                                                                                                                                                                                                                                                                                                                  "angle", KENT_ANGLE, WITHIN(0.0, 3.1415926535897931),
-                                                                                                                                                                                                                                                                                                                                                  "from geometry",
-                                                                                                                                                                                                                                                                                                                                                  "turn of a bend, angle of a branch") WORD("fitting", "orientation", "horizontal|crest|sag", "from geometry", "which way a bend turns, in schematic cases") WORD("fitting",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "restraint",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "thrust-block|anchor-block|restrained-joints|none",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "thrust-block",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "how it is held") REF("fitting", "soil", "soil", "the point's", "soil around it") QUANTITY("fitting", "cover", KENT_LENGTH, WITHIN(0.0, 100.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "the point's",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                             "ground to crown of the pipe") QUANTITY("fitting", "weight", KENT_FORCE, WITHIN(0.0, 1e8), "0 N", "weight of fitting and water in it, counted in the balance") QUANTITY("fitting", "face", KENT_LENGTH, WITHIN(0.0, 100.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "0 m", "centre to the face of every port") LIST("fitting",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "ports",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "port", "none", "ports of a fitting without a network") LATER("fitting",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "branch", "a branch without a pipe")
+    REF("fitting", "at", "point", "none", "point of a fitting found from geometry"),
+    ID("fitting", "id", "none", "name of a fitting stated by its ports"),
+    WORD("fitting", "type", "bend|tee|wye|cross|reducer|dead-end|valve|straight",
+         "from geometry", "kind of fitting"),
+    QUANTITY("fitting", "angle", KENT_ANGLE, WITHIN(0.0, 3.1415926535897931),
+             "from geometry", "turn of a bend, angle of a branch"),
+    WORD("fitting", "orientation", "horizontal|crest|sag", "from geometry",
+         "which way a bend turns, in schematic cases"),
+    WORD("fitting", "restraint", "thrust-block|anchor-block|restrained-joints|none",
+         "by its type", "how it is held"),
+    REF("fitting", "soil", "soil", "the point's", "soil around it"),
+    QUANTITY("fitting", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "the point's",
+             "ground to crown of the pipe"),
+    QUANTITY("fitting", "weight", KENT_FORCE, WITHIN(0.0, 1e8), "0 N",
+             "weight of fitting and water in it, counted in the balance"),
+    QUANTITY("fitting", "face", KENT_LENGTH, WITHIN(0.0, 100.0), "0 m",
+             "centre to the face of every port"),
+    LIST("fitting", "ports", "port", "none", "ports of a fitting without a network"),
+    LATER("fitting", "branch", "a branch without a pipe"),
 
-                                                                                                                            VECTOR(
-                                                                                                                                "port",
-                                                                                                                                "direction", "required", "out of the fitting: east, north, up") QUANTITY("port", "pressure", KENT_PRESSURE, WITHIN(-1.2e5, 1e9), "required", "pressure, gauge") QUANTITY("port",
-                                                                                                                                                                                                                                                                                                         "flow",
-                                                                                                                                                                                                                                                                                                         KENT_FLOW, WITHIN(-1000.0, 1000.0), "0 m^3/s",
-                                                                                                                                                                                                                                                                                                         "flow out of the fitting") QUANTITY("port",
-                                                                                                                                                                                                                                                                                                                                             "inside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
-                                                                                                                                                                                                                                                                                                                                             "required", "of the stream") QUANTITY("port",
-                                                                                                                                                                                                                                                                                                                                                                                   "outside_diameter",
-                                                                                                                                                                                                                                                                                                                                                                                   KENT_DIAMETER, BETWEEN(0.0, 20.0), "none", "of the pipe") QUANTITY("port", "seal_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0), "outside_diameter, else inside_diameter", "on which the pressure acts") NUMBER("port", "momentum_factor", WITHIN(1.0, 2.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                 "computed",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                 "momentum of the stream over that of its mean speed") QUANTITY("port",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "face",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                KENT_LENGTH,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                WITHIN(0.0, 100.0), "the fitting's", "centre to face")
+    VECTOR("port", "direction", "required", "out of the fitting: east, north, up"),
+    QUANTITY("port", "pressure", KENT_PRESSURE, WITHIN(-1.2e5, 1e9), "required",
+             "pressure, gauge"),
+    QUANTITY("port", "flow", KENT_FLOW, WITHIN(-1000.0, 1000.0), "0 m^3/s",
+             "flow out of the fitting"),
+    QUANTITY("port", "inside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0), "required",
+             "of the stream"),
+    QUANTITY("port", "outside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0), "none",
+             "of the pipe"),
+    QUANTITY("port", "seal_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "outside_diameter, else inside_diameter", "on which the pressure acts"),
+    NUMBER("port", "momentum_factor", WITHIN(1.0, 2.0), "computed",
+           "momentum of the stream over that of its mean speed"),
+    QUANTITY("port", "face", KENT_LENGTH, WITHIN(0.0, 100.0), "the fitting's",
+             "centre to face"),
 
-                                                                                                                                QUANTITY(
-                                                                                                                                    "loads",
-                                                                                                                                    "test_pressure", KENT_PRESSURE, BETWEEN(0.0, 1e9), "none", "pressure of the site test at test_gauge_at") REF("loads", "test_gauge_at", "point", "none", "point where test pressure is read") QUANTITY("loads",
-                                                                                                                                                                                                                                                                                                                                          "static_level",
-                                                                                                                                                                                                                                                                                                                                          KENT_LENGTH, WITHIN(-1000.0, 9000.0), "highest fixed level",
-                                                                                                                                                                                                                                                                                                                                          "level of still water")
-                                                                                                                                    NUMBER(
-                                                                                                                                        "loads",
-                                                                                                                                        "safety_factor",
-                                                                                                                                        WITHIN(
-                                                                                                                                            1.0,
-                                                                                                                                            10.0),
-                                                                                                                                        "the design rules'",
-                                                                                                                                        "factor on every thrust")
-                                                                                                                                        GROUP(
-                                                                                                                                            "loads",
-                                                                                                                                            "factors",
-                                                                                                                                            "factors",
-                                                                                                                                            "none",
-                                                                                                                                            "factors by load case")
-                                                                                                                                            LATER("loads",
-                                                                                                                                                  "test_rule", "rule that gives the test pressure") LATER("loads", "future_pressure", "pressure expected later") LATER("loads",
-                                                                                                                                                                                                                                                                       "future_gauge_at",
-                                                                                                                                                                                                                                                                       "where future_pressure is read")
+    QUANTITY("loads", "test_pressure", KENT_PRESSURE, BETWEEN(0.0, 1e9), "none",
+             "pressure of the site test at test_gauge_at"),
+    REF("loads", "test_gauge_at", "point", "none", "point where test pressure is read"),
+    QUANTITY("loads", "static_level", KENT_LENGTH, WITHIN(-1000.0, 9000.0),
+             "highest fixed level", "level of still water"),
+    NUMBER("loads", "safety_factor", WITHIN(1.0, 10.0), "the design rules'",
+           "factor on every thrust"),
+    GROUP("loads", "factors", "factors", "none", "factors by load case"),
+    LATER("loads", "test_rule", "rule that gives the test pressure"),
+    LATER("loads", "future_pressure", "pressure expected later"),
+    LATER("loads", "future_gauge_at", "where future_pressure is read"),
 
-                                                                                                                                                NUMBER("factors", "test", WITHIN(1.0, 10.0), "safety_factor", "site test") NUMBER("factors", "static", WITHIN(1.0, 10.0), "safety_factor", "still water") NUMBER("factors",
-                                                                                                                                                                                                                                                                                                                 "steady",
-                                                                                                                                                                                                                                                                                                                 WITHIN(1.0, 10.0),
-                                                                                                                                                                                                                                                                                                                 "safety_factor", "steady flow") NUMBER("factors", "shut_off", WITHIN(1.0, 10.0), "safety_factor", "pump shut-off") NUMBER("factors",
-                                                                                                                                                                                                                                                                                                                                                                                                                                           "recurring",
-                                                                                                                                                                                                                                                                                                                                                                                                                                           WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                               1.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                               10.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                           "safety_factor",
-                                                                                                                                                                                                                                                                                                                                                                                                                                           "scenarios of class recurring") NUMBER("factors",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "occasional",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      1.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      10.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "safety_factor", "scenarios of class occasional") NUMBER("factors",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "exceptional", WITHIN(1.0, 10.0), "safety_factor", "scenarios of class exceptional") NUMBER("factors",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "suction",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           1.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           10.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "safety_factor",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "lowest pressure, which pulls inwards")
+    NUMBER("factors", "test", WITHIN(1.0, 10.0), "safety_factor", "site test"),
+    NUMBER("factors", "static", WITHIN(1.0, 10.0), "safety_factor", "still water"),
+    NUMBER("factors", "steady", WITHIN(1.0, 10.0), "safety_factor", "steady flow"),
+    NUMBER("factors", "shut_off", WITHIN(1.0, 10.0), "safety_factor", "pump shut-off"),
+    NUMBER("factors", "recurring", WITHIN(1.0, 10.0), "safety_factor",
+           "scenarios of class recurring"),
+    NUMBER("factors", "occasional", WITHIN(1.0, 10.0), "safety_factor",
+           "scenarios of class occasional"),
+    NUMBER("factors", "exceptional", WITHIN(1.0, 10.0), "safety_factor",
+           "scenarios of class exceptional"),
+    NUMBER("factors", "suction", WITHIN(1.0, 10.0), "safety_factor",
+           "lowest pressure, which pulls inwards"),
 
-                                                                                                                                                    WORD(
-                                                                                                                                                        "solver", "friction", "none|constant|quasi-steady|~unsteady", "quasi-steady", "friction in the surge") WORD("solver", "column_separation", "none|~vapour-cavity|~gas-cavity", "none",
-                                                                                                                                                                                                                                                                    "what happens below the vapour limit") SWITCH("solver",
-                                                                                                                                                                                                                                                                                                                  "grid_check",
-                                                                                                                                                                                                                                                                                                                  "true", "run a second, finer grid") NUMBER("solver",
-                                                                                                                                                                                                                                                                                                                                                             "wave_speed_tolerance",
-                                                                                                                                                                                                                                                                                                                                                             WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                 0.0,
-                                                                                                                                                                                                                                                                                                                                                                 0.2),
-                                                                                                                                                                                                                                                                                                                                                             "0.02", "share by which a wave speed may be moved") COUNT("solver",
-                                                                                                                                                                                                                                                                                                                                                                                                                       "min_reaches",
-                                                                                                                                                                                                                                                                                                                                                                                                                       WITHIN(
-                                                                                                                                                                                                                                                                                                                                                                                                                           1.0,
-                                                                                                                                                                                                                                                                                                                                                                                                                           10000.0),
-                                                                                                                                                                                                                                                                                                                                                                                                                       "20", "reaches in the shortest pipe that is not lumped") QUANTITY("solver",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         "time_step",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                         KENT_TIME, BETWEEN(0.0, 1000.0), "chosen", "time step, in place of min_reaches") COUNT("solver",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                "history_rows", WITHIN(100.0, 10000000.0), "20000", "rows of a history beyond which it is thinned") LATER("solver",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "creep",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "creep of plastic walls by material")
+    WORD("solver", "friction", "none|constant|quasi-steady|~unsteady", "quasi-steady",
+         "friction in the surge"),
+    WORD("solver", "column_separation", "none|~vapour-cavity|~gas-cavity", "none",
+         "what happens below the vapour limit"),
+    SWITCH("solver", "grid_check", "true", "run a second, finer grid"),
+    NUMBER("solver", "wave_speed_tolerance", WITHIN(0.0, 0.2), "0.02",
+           "share by which a wave speed may be moved"),
+    COUNT("solver", "min_reaches", WITHIN(1.0, 10000.0), "20",
+          "reaches in the shortest pipe that is not lumped"),
+    QUANTITY("solver", "time_step", KENT_TIME, BETWEEN(0.0, 1000.0), "chosen",
+             "time step, in place of min_reaches"),
+    COUNT("solver", "history_rows", WITHIN(100.0, 10000000.0), "20000",
+          "rows of a history beyond which it is thinned"),
+    LATER("solver", "creep", "creep of plastic walls by material"),
 
-                                                                                                                                                        REF("design_rules",
-                                                                                                                                                            "set",
-                                                                                                                                                            "rule",
-                                                                                                                                                            "common-practice",
-                                                                                                                                                            "set of the catalogue of rules")
-                                                                                                                                                            RULE_VALUES(
-                                                                                                                                                                "design_rules",
-                                                                                                                                                                "the set's")
+    REF("design_rules", "set", "rule", "common-practice",
+        "set of the catalogue of rules"),
+    RULE_VALUES("design_rules", "the set's"),
 
     /* Devices of later versions: their keys, so that the format stays whole. */
-    LATER("pump", "id", "its name") LATER("pump", "at", "point where it stands") LATER(
-        "pump", "suction_level", "level it draws from") LATER("pump", "in_parallel",
-                                                              "pumps side by side")
-        LATER("pump", "running", "of them running") LATER(
-            "pump",
-            "speed", "rated speed") LATER("pump", "inertia", "moment of inertia")
-            LATER("pump", "stages", "stages of one pump") LATER(
-                "pump",
-                "flow_head",
-                "pairs (flow, head)") LATER("pump", "rated", "rated flow and head")
-                LATER("pump", "efficiency", "efficiency at the rated point") LATER(
-                    "pump",
-                    "check_valve",
-                    "check valve beside it") LATER("check_valve", "id", "its name")
-                    LATER("check_valve", "at", "point where it stands") LATER(
-                        "check_valve",
-                        "flow_to", "next point in flow direction") LATER("check_valve",
-                                                                         "size", "bore")
-                        LATER("check_valve", "loss", "K when open") LATER(
-                            "check_valve", "delay",
-                            "time from reversal to closure") LATER("surge_tank", "id",
-                                                                   "its name")
-                            LATER("surge_tank", "at", "point beside which it stands") LATER(
-                                "surge_tank",
-                                "area",
-                                "water surface") LATER("surge_tank", "bottom_level",
-                                                       "bottom")
-                                LATER("surge_tank", "overflow_level", "overflow") LATER(
-                                    "surge_tank",
-                                    "connection_diameter",
-                                    "bore of the connection") LATER("surge_tank",
-                                                                    "loss_in",
-                                                                    "K into the tank")
-                                    LATER("surge_tank", "loss_out",
-                                          "K out of the tank") LATER("one_way_surge_"
-                                                                     "tank",
-                                                                     "id",
-                                                                     "its name")
-                                        LATER("one_way_surge_tank", "at",
-                                              "point beside which it "
-                                              "stands")
-                                            LATER("one_way_surge_tank", "area",
-                                                  "water surface")
-                                                LATER(
-                                                    "one_way_surge_"
-                                                    "tank",
-                                                    "level",
-                                                    "water level") LATER("one_way_"
-                                                                         "surge_"
-                                                                         "tank",
-                                                                         "connection_"
-                                                                         "diameter",
-                                                                         "bore of the "
-                                                                         "connection")
-                                                    LATER("one_way_"
-                                                          "surge_"
-                                                          "tank",
-                                                          "loss_out",
-                                                          "K out of "
-                                                          "the tank")
-                                                        LATER("air_"
-                                                              "vesse"
-                                                              "l",
-                                                              "id",
-                                                              "its "
-                                                              "name")
-                                                            LATER("ai"
-                                                                  "r_"
-                                                                  "ve"
-                                                                  "ss"
-                                                                  "e"
-                                                                  "l",
-                                                                  "a"
-                                                                  "t",
-                                                                  "po"
-                                                                  "in"
-                                                                  "t "
-                                                                  "be"
-                                                                  "si"
-                                                                  "de"
-                                                                  " "
-                                                                  "wh"
-                                                                  "ic"
-                                                                  "h "
-                                                                  "it"
-                                                                  " s"
-                                                                  "ta"
-                                                                  "nd"
-                                                                  "s") LATER("air_"
-                                                                             "vessel",
-                                                                             "total_"
-                                                                             "volume",
-                                                                             "volume "
-                                                                             "of the "
-                                                                             "vessel")
-                                                                LATER(
-                                                                    "air_vessel",
-                                                                    "gas_volume",
-                                                                    "gas in it in the "
-                                                                    "steady state")
-                                                                    LATER(
-                                                                        "air_vessel",
-                                                                        "polytropic_"
-                                                                        "exponent",
-                                                                        "exponent of "
-                                                                        "the gas law")
-                                                                        LATER(
-                                                                            "air_"
-                                                                            "vessel",
-                                                                            "connection"
-                                                                            "_diameter",
-                                                                            "bore of "
-                                                                            "the "
-                                                                            "connectio"
-                                                                            "n")
-                                                                            LATER("air_"
-                                                                                  "vess"
-                                                                                  "el",
-                                                                                  "loss"
-                                                                                  "_in",
-                                                                                  "K "
-                                                                                  "into"
-                                                                                  " the"
-                                                                                  " ves"
-                                                                                  "sel")
-                                                                                LATER(
-                                                                                    "ai"
-                                                                                    "r_"
-                                                                                    "ve"
-                                                                                    "ss"
-                                                                                    "e"
-                                                                                    "l",
-                                                                                    "lo"
-                                                                                    "ss"
-                                                                                    "_o"
-                                                                                    "u"
-                                                                                    "t",
-                                                                                    "K "
-                                                                                    "ou"
-                                                                                    "t "
-                                                                                    "of"
-                                                                                    " t"
-                                                                                    "he"
-                                                                                    " v"
-                                                                                    "es"
-                                                                                    "se"
-                                                                                    "l")
-                                                                                    LATER(
-                                                                                        "relief_valve",
-                                                                                        "id", "its name") LATER("relief_valve", "at", "point beside which it stands") LATER("relief_valve", "set_pressure", "pressure at which it opens") LATER("relief_valve", "full_open_pressure", "pressure at which it is open") LATER("relief_valve",
-                                                                                                                                                                                                                                                                                                                            "size", "bore") LATER("relief_valve", "kv", "capacity when open") LATER("relief_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                    "closure_time",
-                                                                                                                                                                                                                                                                                                                                                                                                    "time it takes to close") LATER("air_valve", "id",
-                                                                                                                                                                                                                                                                                                                                                                                                                                    "its name") LATER("air_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                      "at",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                      "point beside which it stands") LATER("air_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                            "admission_orifice", "diameter for air in") LATER("air_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "release_orifice", "diameter for air out") LATER("air_valve", "admission_coefficient", "discharge coefficient, in") LATER("air_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                        "release_coefficient",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                        "discharge coefficient, out") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                            "id",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                            "its name") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "at", "point where it stands") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                   "flow_to", "next point in flow direction") LATER("control_valve", "holds",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                    "side whose pressure it holds") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "set_pressure",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                          "pressure it holds") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "size", "bore") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "kv",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                           "capacity when open") LATER("control_valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "opening_time", "time it takes to open") LATER("control_"
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "valve",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "closure_"
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "time",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "time it "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "takes to "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                      "close") LATER("state",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                     "id", "its name") LATER("state", "levels", "pairs (point, level)") LATER("state",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "outflow_"
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "factor",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "on every "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                              "outflow") LATER("state", "roughness_factor", "on every roughness") LATER("state",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                        "running", "pairs (pump, how many run)") LATER("ground"
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "_zone",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "pipe",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "pipe "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "it "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "lies "
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                       "along")
-                                                                                        LATER("ground_zone", "from", "chainage where it starts") LATER(
-                                                                                            "gr"
-                                                                                            "ou"
-                                                                                            "nd"
-                                                                                            "_z"
-                                                                                            "on"
-                                                                                            "e",
-                                                                                            "t"
-                                                                                            "o",
-                                                                                            "ch"
-                                                                                            "ai"
-                                                                                            "na"
-                                                                                            "ge"
-                                                                                            " w"
-                                                                                            "he"
-                                                                                            "re"
-                                                                                            " i"
-                                                                                            "t "
-                                                                                            "en"
-                                                                                            "d"
-                                                                                            "s") LATER("ground_zone",
-                                                                                                       "soil",
-                                                                                                       "soil") LATER("ground_zone",
-                                                                                                                     "cover", "cover") LATER("ground_zone", "water_table", "depth of ground water")
-                                                                                            LATER("ground_zone", "trench", "kind of trench") LATER(
-                                                                                                "branch",
-                                                                                                "direction",
-                                                                                                "out of the fitting")
-                                                                                                LATER(
-                                                                                                    "branch",
-                                                                                                    "outside_diameter",
-                                                                                                    "outside diameter")
-                                                                                                    LATER(
-                                                                                                        "branch",
-                                                                                                        "joint",
-                                                                                                        "kind of joint")
-                                                                                                        LATER(
-                                                                                                            "branch",
-                                                                                                            "end",
-                                                                                                            "blank, valve or open")
+    LATER("pump", "id", "its name"),
+    LATER("pump", "at", "point where it stands"),
+    LATER("pump", "suction_level", "level it draws from"),
+    LATER("pump", "in_parallel", "pumps side by side"),
+    LATER("pump", "running", "of them running"),
+    LATER("pump", "speed", "rated speed"),
+    LATER("pump", "inertia", "moment of inertia"),
+    LATER("pump", "stages", "stages of one pump"),
+    LATER("pump", "flow_head", "pairs (flow, head)"),
+    LATER("pump", "rated", "rated flow and head"),
+    LATER("pump", "efficiency", "efficiency at the rated point"),
+    LATER("pump", "check_valve", "check valve beside it"),
+
+    LATER("check_valve", "id", "its name"),
+    LATER("check_valve", "at", "point where it stands"),
+    LATER("check_valve", "flow_to", "next point in flow direction"),
+    LATER("check_valve", "size", "bore"),
+    LATER("check_valve", "loss", "K when open"),
+    LATER("check_valve", "delay", "time from reversal to closure"),
+
+    LATER("surge_tank", "id", "its name"),
+    LATER("surge_tank", "at", "point beside which it stands"),
+    LATER("surge_tank", "area", "water surface"),
+    LATER("surge_tank", "bottom_level", "bottom"),
+    LATER("surge_tank", "overflow_level", "overflow"),
+    LATER("surge_tank", "connection_diameter", "bore of the connection"),
+    LATER("surge_tank", "loss_in", "K into the tank"),
+    LATER("surge_tank", "loss_out", "K out of the tank"),
+
+    LATER("one_way_surge_tank", "id", "its name"),
+    LATER("one_way_surge_tank", "at", "point beside which it stands"),
+    LATER("one_way_surge_tank", "area", "water surface"),
+    LATER("one_way_surge_tank", "level", "water level"),
+    LATER("one_way_surge_tank", "connection_diameter", "bore of the connection"),
+    LATER("one_way_surge_tank", "loss_out", "K out of the tank"),
+
+    LATER("air_vessel", "id", "its name"),
+    LATER("air_vessel", "at", "point beside which it stands"),
+    LATER("air_vessel", "total_volume", "volume of the vessel"),
+    LATER("air_vessel", "gas_volume", "gas in it in the steady state"),
+    LATER("air_vessel", "polytropic_exponent", "exponent of the gas law"),
+    LATER("air_vessel", "connection_diameter", "bore of the connection"),
+    LATER("air_vessel", "loss_in", "K into the vessel"),
+    LATER("air_vessel", "loss_out", "K out of the vessel"),
+
+    LATER("relief_valve", "id", "its name"),
+    LATER("relief_valve", "at", "point beside which it stands"),
+    LATER("relief_valve", "set_pressure", "pressure at which it opens"),
+    LATER("relief_valve", "full_open_pressure", "pressure at which it is open"),
+    LATER("relief_valve", "size", "bore"),
+    LATER("relief_valve", "kv", "capacity when open"),
+    LATER("relief_valve", "closure_time", "time it takes to close"),
+
+    LATER("air_valve", "id", "its name"),
+    LATER("air_valve", "at", "point beside which it stands"),
+    LATER("air_valve", "admission_orifice", "diameter for air in"),
+    LATER("air_valve", "release_orifice", "diameter for air out"),
+    LATER("air_valve", "admission_coefficient", "discharge coefficient, in"),
+    LATER("air_valve", "release_coefficient", "discharge coefficient, out"),
+
+    LATER("control_valve", "id", "its name"),
+    LATER("control_valve", "at", "point where it stands"),
+    LATER("control_valve", "flow_to", "next point in flow direction"),
+    LATER("control_valve", "holds", "side whose pressure it holds"),
+    LATER("control_valve", "set_pressure", "pressure it holds"),
+    LATER("control_valve", "size", "bore"),
+    LATER("control_valve", "kv", "capacity when open"),
+    LATER("control_valve", "opening_time", "time it takes to open"),
+    LATER("control_valve", "closure_time", "time it takes to close"),
+
+    LATER("state", "id", "its name"),
+    LATER("state", "levels", "pairs (point, level)"),
+    LATER("state", "outflow_factor", "on every outflow"),
+    LATER("state", "roughness_factor", "on every roughness"),
+    LATER("state", "running", "pairs (pump, how many run)"),
+
+    LATER("ground_zone", "pipe", "pipe it lies along"),
+    LATER("ground_zone", "from", "chainage where it starts"),
+    LATER("ground_zone", "to", "chainage where it ends"),
+    LATER("ground_zone", "soil", "soil"),
+    LATER("ground_zone", "cover", "cover"),
+    LATER("ground_zone", "water_table", "depth of ground water"),
+    LATER("ground_zone", "trench", "kind of trench"),
+
+    LATER("branch", "direction", "out of the fitting"),
+    LATER("branch", "outside_diameter", "outside diameter"),
+    LATER("branch", "joint", "kind of joint"),
+    LATER("branch", "end", "blank, valve or open"),
 
     /* ---- files of the catalogue ----------------------------------------------- */
     COUNT("catalogue", "format", WITHIN(1.0, 1.0), "required",
-          "version of this format") LIST("catalogue", "standards", "standard", "none",
-                                         "pipes, a table per standard")
-        LIST("catalogue", "materials", "material", "none", "materials of pipes") LIST(
-            "catalogue", "valves", "valve_type", "none",
-            "types of valve") LIST("catalogue", "soils", "soil_row", "none",
-                                   "presumptive bearings of soils") LIST("catalogue",
-                                                                         "rules",
-                                                                         "rule", "none",
-                                                                         "sets of "
-                                                                         "design rules")
+          "version of this format"),
+    LIST("catalogue", "standards", "standard", "none", "pipes, a table per standard"),
+    LIST("catalogue", "materials", "material", "none", "materials of pipes"),
+    LIST("catalogue", "valves", "valve_type", "none", "types of valve"),
+    LIST("catalogue", "soils", "soil_row", "none", "presumptive bearings of soils"),
+    LIST("catalogue", "rules", "rule", "none", "sets of design rules"),
 
-            ID("standard", "id", "required", "first part of the ids of its pipes") TEXT(
-                "standard", "standard", 95, "required",
-                "standard with edition") REF("standard", "material", "material",
-                                             "required", "material of the wall")
-                WORD("standard", "unit", "mm|in", "required", "unit of the rows") TEXT(
-                    "standard", "before_size", 15, "",
-                    "what stands before the size in an id") TEXT("standard",
-                                                                 "after_size", 15, "",
-                                                                 "what stands "
-                                                                 "after the size "
-                                                                 "in an id")
-                    WORD("standard", "walls", "minimum|nominal", "required",
-                         "what the rows give") QUANTITY("standard", "tolerance",
-                                                        KENT_DIAMETER, WITHIN(0.0, 0.01), "0 mm",
-                                                        "nominal less minimum wall: "
-                                                        "the "
-                                                        "part that is the same for "
-                                                        "all")
-                        NUMBER("standard", "tolerance_per_size", WITHIN(0.0, 0.1),
-                               "0.0",
-                               "nominal less minimum wall: the part in "
-                               "proportion to the size") LIST("standard", "classes",
-                                                              "pipe_column", "required",
-                                                              "classes, one per column")
-                            LIST("standard", "rows", "", "required",
-                                 "lists (size, outside diameter, lining, wall of each "
-                                 "class; 0: not made)") PROVENANCE("standard")
+    ID("standard", "id", "required", "first part of the ids of its pipes"),
+    TEXT("standard", "standard", 95, "required", "standard with edition"),
+    REF("standard", "material", "material", "required", "material of the wall"),
+    WORD("standard", "unit", "mm|in", "required", "unit of the rows"),
+    TEXT("standard", "before_size", 15, "", "what stands before the size in an id"),
+    TEXT("standard", "after_size", 15, "", "what stands after the size in an id"),
+    WORD("standard", "walls", "minimum|nominal", "required", "what the rows give"),
+    QUANTITY("standard", "tolerance", KENT_DIAMETER, WITHIN(0.0, 0.01), "0 mm",
+             "nominal less minimum wall: the part that is the same for all"),
+    NUMBER("standard", "tolerance_per_size", WITHIN(0.0, 0.1), "0.0",
+           "nominal less minimum wall: the part in proportion to the size"),
+    LIST("standard", "classes", "pipe_column", "required", "classes, one per column"),
+    LIST("standard", "rows", "", "required",
+         "lists (size, outside diameter, lining, wall of each class; 0: not made)"),
+    PROVENANCE("standard"),
 
-                                ID("pipe_column", "id", "required", "the class in the ids of its pipes") QUANTITY(
-                                    "pipe_column", "pressure_rating", KENT_PRESSURE,
-                                    BETWEEN(0.0, 1e9), "none",
-                                    "pressure the class is rated for")
+    ID("pipe_column", "id", "required", "the class in the ids of its pipes"),
+    QUANTITY("pipe_column", "pressure_rating", KENT_PRESSURE, BETWEEN(0.0, 1e9), "none",
+             "pressure the class is rated for"),
 
-                                    ID("material", "id", "required", "its name") QUANTITY(
-                                        "material",
-                                        "elastic_modulus", KENT_MODULUS,
-                                        WITHIN(1e7, 1e12), "required",
-                                        "modulus, short-term") NUMBER("material", "poisson_ratio",
-                                                                      WITHIN(0.0, 0.5), "required",
-                                                                      "Poisson's ratio")
-                                        QUANTITY("material", "density", KENT_DENSITY,
-                                                 WITHIN(500.0, 20000.0),
-                                                 "required",
-                                                 "density")
-                                            QUANTITY("material", "roughness",
-                                                     KENT_DIAMETER,
-                                                     WITHIN(0.0, 0.1), "required",
-                                                     "equivalent sand roughness of "
-                                                     "the usual inside")
-                                                QUANTITY("material", "lining_modulus",
-                                                         KENT_MODULUS,
-                                                         WITHIN(0.0, 1e12),
-                                                         "0 GPa",
-                                                         "modulus of the usual "
-                                                         "lining") PROVENANCE("mater"
-                                                                              "ial")
+    ID("material", "id", "required", "its name"),
+    QUANTITY("material", "elastic_modulus", KENT_MODULUS, WITHIN(1e7, 1e12), "required",
+             "modulus, short-term"),
+    NUMBER("material", "poisson_ratio", WITHIN(0.0, 0.5), "required",
+           "Poisson's ratio"),
+    QUANTITY("material", "density", KENT_DENSITY, WITHIN(500.0, 20000.0), "required",
+             "density"),
+    QUANTITY("material", "roughness", KENT_DIAMETER, WITHIN(0.0, 0.1), "required",
+             "equivalent sand roughness of the usual inside"),
+    QUANTITY("material", "lining_modulus", KENT_MODULUS, WITHIN(0.0, 1e12), "0 GPa",
+             "modulus of the usual lining"),
+    PROVENANCE("material"),
 
-                                                    ID("valve_type", "id", "required",
-                                                       "its name")
-                                                        LIST("valve_type",
-                                                             "characteristic", "",
-                                                             "required",
-                                                             "pairs (opening, "
-                                                             "K)") NUMBER("valve"
-                                                                          "_typ"
-                                                                          "e",
-                                                                          "loss",
-                                                                          BETWEEN(
-                                                                              0.0,
-                                                                              1e9),
-                                                                          "none",
-                                                                          "K "
-                                                                          "fully"
-                                                                          " ope"
-                                                                          "n")
-                                                            PROVENANCE("valve_type")
+    ID("valve_type", "id", "required", "its name"),
+    LIST("valve_type", "characteristic", "", "required", "pairs (opening, K)"),
+    NUMBER("valve_type", "loss", BETWEEN(0.0, 1e9), "none", "K fully open"),
+    PROVENANCE("valve_type"),
 
-                                                                ID("soil_row", "id",
-                                                                   "required",
-                                                                   "its name, "
-                                                                   "with its "
-                                                                   "USCS "
-                                                                   "symbol")
-                                                                    SOIL_VALUES(
-                                                                        "soil_"
-                                                                        "row",
-                                                                        "requir"
-                                                                        "ed") PROVENANCE("soil_row")
+    ID("soil_row", "id", "required", "its name, with its USCS symbol"),
+    SOIL_VALUES("soil_row", "required"),
+    PROVENANCE("soil_row"),
 
-                                                                        ID("rul"
-                                                                           "e",
-                                                                           "id",
-                                                                           "req"
-                                                                           "uir"
-                                                                           "ed",
-                                                                           "nam"
-                                                                           "e "
-                                                                           "of "
-                                                                           "the"
-                                                                           " se"
-                                                                           "t")
-                                                                            RULE_VALUES(
-                                                                                "rule",
-                                                                                "requir"
-                                                                                "ed")
-                                                                                PROVENANCE(
-                                                                                    "ru"
-                                                                                    "l"
-                                                                                    "e")};
+    ID("rule", "id", "required", "name of the set"),
+    RULE_VALUES("rule", "required"),
+    PROVENANCE("rule"),
+};
 
 const size_t KENT_KEY_COUNT = sizeof KENT_KEYS / sizeof KENT_KEYS[0];
 

@@ -111,8 +111,11 @@ static double read_quantity(kent_reader *r, kent_record *record, const char *key
     if (text) {
         const kent_status status = kent_units_read(r->units, text, kind, &si, &err);
         if (status == KENT_OK) return si;
-        if (status == KENT_E_NOMEM) r->failed = true;
-        complain(r, record, twig, "%s: %s", key, err.what);
+        if (status == KENT_E_NOMEM) {
+            r->failed = true;
+        } else {
+            complain(r, record, twig, "%s: %s", key, err.what);
+        }
     } else if (!isnan(kent_twig_number(twig))) {
         complain(r, record, twig,
                  "%s = %.9g has no unit; write for instance \"%s\" or \"%s\"", key,
@@ -606,6 +609,4 @@ void kent_reader_clear(kent_reader *r)
     for (int i = 0; i < KENT_SHELF_COUNT; i++) {
         kent_directory_clear(&r->shelves[i]);
     }
-    kent_units_free(r->units);
-    r->units = NULL;
 }

@@ -29,7 +29,7 @@ typedef enum kent_shelf {
 
 typedef struct kent_reader {
     const kent_tree *tree;
-    kent_units *units;
+    kent_units *units; /* the caller's: one database serves every file */
     kent_complaints *complaints;
     kent_system system; /* what "1+198" means */
     kent_directory shelves[KENT_SHELF_COUNT];
@@ -96,6 +96,6 @@ int kent_record_lookup(kent_reader *r, kent_record *record, const kent_twig *ite
 void kent_reader_shelve(kent_reader *r, kent_shelf shelf, const char *id, int index,
                         kent_place place);
 void kent_reader_close_shelf(kent_reader *r, kent_shelf shelf);
-void kent_reader_clear(kent_reader *r);
+void kent_reader_clear(kent_reader *r); /* frees its shelves */
 
 #endif

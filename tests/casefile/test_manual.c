@@ -1,12 +1,7 @@
 /* The key table against docs/case-format.md: every key of this version stands there
  * with what it takes, its range, its default and what it says. `test_manual --print`
  * prints the tables, to be put into the document after a change. */
-#include "kent_casefile.h"
-#include "kent_check.h"
-
-#include <stdio.h>
-#include <stdlib.h>
-#include <string.h>
+#include "case_text.h"
 
 static void list_words(const char *words, char *out, size_t size)
 {
@@ -188,6 +183,28 @@ static void the_manual_has_no_row_that_the_table_does_not_know(void **state)
     assert_int_equal(rows, keys);
 }
 
+static void the_example_of_the_manual_is_a_case(void **state)
+{
+    (void)state;
+    char *manual = read_manual();
+    char *first = strstr(manual, "```\n");
+    assert_non_null(first);
+    char *end = strstr(first + 4, "\n```");
+    assert_non_null(end);
+    end[1] = '\0';
+    kent_catalogue *c = read_catalogue();
+    kent_complaints complaints;
+    kent_model *m = NULL;
+    const kent_status status =
+        read_bytes(c, first + 4, strlen(first + 4), &m, &complaints);
+    if (complaints.count > 0) print_error("%s\n", complaints.kept[0].what);
+    assert_int_equal(status, KENT_OK);
+    assert_int_equal(m->fitting_count, 2);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+    free(manual);
+}
+
 int main(int argc, char **argv)
 {
     if (argc > 1 && strcmp(argv[1], "--print") == 0) {
@@ -198,6 +215,7 @@ int main(int argc, char **argv)
         cmocka_unit_test(every_key_of_this_version_stands_in_the_manual_as_it_is_read),
         cmocka_unit_test(every_key_of_a_later_version_is_named_in_the_manual),
         cmocka_unit_test(the_manual_has_no_row_that_the_table_does_not_know),
+        cmocka_unit_test(the_example_of_the_manual_is_a_case),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }

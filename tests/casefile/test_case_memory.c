@@ -1,0 +1,70 @@
+/* Every allocation of a reading refused once: "out of memory", nothing half-made, and
+ * (with the sanitizer) nothing lost. */
+#include "kent_alloc_fail.h"
+#include "case_text.h"
+
+typedef struct reading {
+    const kent_catalogue *catalogue;
+    char path[64];
+} reading;
+
+static int read_the_case(void *context)
+{
+    const reading *r = context;
+    kent_complaints complaints = {0};
+    kent_error err = {0};
+    kent_model *m = NULL;
+    const kent_status status =
+        kent_case_read(r->path, r->catalogue, &m, &complaints, &err);
+    if (status == KENT_OK) {
+        assert_non_null(m);
+        kent_model_free(m);
+        return 0;
+    }
+    assert_int_equal(status, KENT_E_NOMEM);
+    assert_int_equal(err.status, KENT_E_NOMEM);
+    assert_null(m);
+    return -1;
+}
+
+static int read_the_catalogue(void *context)
+{
+    kent_complaints complaints = {0};
+    kent_error err = {0};
+    kent_catalogue *c = NULL;
+    const kent_status status = kent_catalogue_read(context, &c, &complaints, &err);
+    if (status == KENT_OK) {
+        kent_catalogue_free(c);
+        return 0;
+    }
+    assert_int_equal(status, KENT_E_NOMEM);
+    assert_null(c);
+    return -1;
+}
+
+static void each_refused_allocation_of_a_case_is_out_of_memory(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    reading r = {.catalogue = c};
+    write_bytes(r.path, SOUND_CASE, strlen(SOUND_CASE));
+    assert_true(kent_allocations_needed(read_the_case, &r) > 20);
+    (void)unlink(r.path);
+    kent_catalogue_free(c);
+}
+
+static void each_refused_allocation_of_the_catalogue_is_out_of_memory(void **state)
+{
+    (void)state;
+    char folder[] = KENT_SOURCE_DIR "/config";
+    assert_true(kent_allocations_needed(read_the_catalogue, folder) > 20);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(each_refused_allocation_of_a_case_is_out_of_memory),
+        cmocka_unit_test(each_refused_allocation_of_the_catalogue_is_out_of_memory),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
