@@ -110,7 +110,7 @@ static void derive_angle(const kent_sheet *s, size_t i, size_t j, const char *sa
 
     (void)snprintf(formula, sizeof formula, "%s(n%dx*n%dx+n%dy*n%dy+n%dz*n%dz)",
                    bend ? "-" : "", a, b, a, b, a, b);
-    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, "5.4",
+    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "5.4" : "5.7",
                          "cosine of the angle, by the two directions");
     kent_derivation_put(d, "angle", angle, KENT_ANGLE, KENT_COMPUTED, says);
     kent_derivation_work(d, "c'", cos(angle), KENT_RATIO, "cos(angle)", "",
@@ -144,8 +144,13 @@ static void print_geometry(const kent_sheet *s)
         derive_angle(s, 0, 1, "turn of the bend in space", &d);
     }
     if ((f->type == KENT_TEE || f->type == KENT_WYE) && f->port_count == 3) {
+        const kent_vec3 branch = ports[2].direction;
+        const bool first = kent_vec3_angle(branch, ports[0].direction) <=
+                           kent_vec3_angle(branch, ports[1].direction);
         kent_derivation_heading(&d, "Branch");
-        derive_angle(s, 0, 2, "between leg 1 and the branch", &d);
+        derive_angle(s, first ? 0 : 1, 2,
+                     first ? "of the branch, with leg 1" : "of the branch, with leg 2",
+                     &d);
     }
     kent_steps_print(&d, s->units, s->limit, s->out);
     kent_derivation_clear(&d);

@@ -413,9 +413,13 @@ static void add_band(const kent_page *page, double head, kent_text *words)
     const kent_model *m = page->model;
     if (!isfinite(head)) return;
     const double band = head * m->water.density * m->gravity;
-    kent_text_add(words, "; grid band ±%.2g %s",
-                  kent_units_shown(KENT_PRESSURE, page->units, band),
-                  kent_shown_unit(KENT_PRESSURE, page->units).text);
+    const double shown = kent_units_shown(KENT_PRESSURE, page->units, band);
+    const kent_shown unit = kent_shown_unit(KENT_PRESSURE, page->units);
+    if (shown < 0.001) {
+        kent_text_add(words, "; grid band under 0.001 %s", unit.text);
+    } else {
+        kent_text_add(words, "; grid band ±%.2g %s", shown, unit.text);
+    }
 }
 
 static void print_scenario(kent_page *page, size_t index)
@@ -471,12 +475,13 @@ static void print_overall(kent_page *page)
 static void print_scenarios(kent_page *page)
 {
     const size_t count = page->results->scenario_count;
+    if (page->model->span_count == 0) return;
     kent_text_add(page->out, "\n");
     for (size_t i = 0; i < count; i++) {
         print_scenario(page, i);
     }
     print_overall(page);
-    if (count == 0 && page->model->span_count > 0) {
+    if (count == 0) {
         kent_text_add(page->out,
                       "No scenario was run: no surge is in these figures.\n");
     }

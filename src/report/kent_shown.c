@@ -169,6 +169,16 @@ static kent_shown size_of(const kent_model *m, const kent_fitting *fitting,
     return bore(inside, system);
 }
 
+/* m */
+static double smallest_bore(const kent_model *m, const kent_fitting *fitting)
+{
+    double least = fitting->size;
+    for (size_t i = 0; i < fitting->port_count; i++) {
+        least = fmin(least, m->ports[fitting->port_first + i].inside_diameter);
+    }
+    return least;
+}
+
 kent_shown kent_shown_size(const kent_model *m, const kent_fitting *fitting,
                            kent_system system)
 {
@@ -211,8 +221,8 @@ kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
         if (isnan(fitting->branch_size)) break;
         return shown("%s %.0f° × %.40s", word, fitting->angle * DEGREES, branch.text);
     case KENT_REDUCER:
-        if (isnan(fitting->branch_size)) break;
-        return shown("%s to %.40s", word, branch.text);
+        return shown("%s to %.40s", word,
+                     size_of(m, fitting, smallest_bore(m, fitting), system).text);
     case KENT_DEAD_END:
         return shown("dead end");
     case KENT_VALVE:

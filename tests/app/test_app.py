@@ -1,0 +1,312 @@
+"""test_app.py KENTLEDGE WORK_OUT SOURCE_DIR WORK_DIR: the program from outside.
+
+Exit statuses, what goes to which stream, and that a folder of results is whole or not there.
+"""
+import csv
+import json
+import os
+import pathlib
+import re
+import shutil
+import subprocess
+import sys
+import unittest
+
+PROGRAM, WORK_OUT, SOURCE, WORK = (pathlib.Path(a).resolve() for a in sys.argv[1:5])
+
+CASE = """format = 1;
+title = "Little main of Øvrevann";
+points = (
+  { id = "R"; x = "0 m"; y = "0 m"; z = "60 m"; },
+  { id = "PI1"; x = "300 m"; y = "0 m"; z = "40 m"; },
+  { id = "E"; x = "500 m"; y = "200 m"; z = "30 m"; }
+);
+pipes = ( { id = "A"; route = [ "R", "PI1", "E" ];
+            pipe_class = "DI-EN545-C40-DN300"; joint = "push-on"; } );
+fixed_levels = ( { at = "R"; level = "80 m"; } );
+valves = ( { id = "V1"; at = "E"; type = "linear"; size = "300 mm"; flow = "70 L/s";
+             discharge_level = "31 m"; } );
+scenarios = (
+  { id = "shut-3s"; title = "Valve closed in 3 s"; duration = "10 s"; class = "occasional";
+    events = ( { valve = "V1"; start_time = "1 s"; ramp_time = "3 s"; to = 0.0; } ); },
+  { id = "shut-30s"; duration = "40 s"; class = "recurring";
+    events = ( { valve = "V1"; start_time = "1 s"; ramp_time = "30 s"; to = 0.0; } ); }
+);
+soils = ( { id = "till"; allowable_bearing = "200 kPa"; unit_weight = "19 kN/m^3"; } );
+ground = { soil = "till"; cover = "1.6 m"; };
+loads = { test_pressure = "10 bar"; test_gauge_at = "E"; safety_factor = 1.5; };
+"""
+PEAT = CASE.replace('soil = "till"; cover', 'soil = "peat-PT"; cover')
+FILES = {"summary.csv", "results.json", "history-shut-3s.csv", "history-shut-30s.csv",
+         "profile-shut-3s.csv", "profile-shut-30s.csv"}
+
+
+class App(unittest.TestCase):
+    def setUp(self):
+        self.dir = WORK / self.id().rsplit(".", 1)[-1]
+        shutil.rmtree(self.dir, ignore_errors=True)
+        self.dir.mkdir(parents=True)
+        (self.dir / "main.cfg").write_text(CASE)
+        self.env = dict(os.environ, KENTLEDGE_CONFIG=str(SOURCE / "config"))
+
+    def call(self, *args, **kw):
+        kw.setdefault("stdout", subprocess.PIPE)
+        kw.setdefault("env", self.env)
+        return subprocess.run([PROGRAM, *args], cwd=self.dir, stderr=subprocess.PIPE,
+                              encoding="utf-8", timeout=120, **kw)
+
+    def left(self):
+        return {p.name for p in self.dir.iterdir()} - {"main.cfg"}
+
+    # ---- usage -----------------------------------------------------------------------
+
+    def test_usage_errors_are_status_2_and_say_what_would_be_right(self):
+        for args, words in [
+                ([], "no command"), (["rnu", "main.cfg"], "did you mean 'run'"),
+                (["main.cfg"], "run main.cfg"), (["run"], "one CASE"),
+                (["run", "a", "b"], "one CASE"), (["explain", "main.cfg"], "FITTING"),
+                (["run", "main.cfg", "--units", "metric"], "SI, US"),
+                (["run", "main.cfg", "--format=xml"], "table, csv, json"),
+                (["run", "main.cfg", "--threads", "0"], "1 to 1024"),
+                (["run", "main.cfg", "--threads", "2x"], "1 to 1024"),
+                (["run", "main.cfg", "--nonsense"], "nonsense"),
+                (["run", "main.cfg", "--out", "x", "--no-files"], "exclude"),
+                (["check", "main.cfg", "--strict"], "--strict"),
+                (["catalogue", "pips"], "pipes"),
+                (["draw", "main.cfg", "plan"], "not in this version"),
+                (["catalogue", "pumps"], "not in this version")]:
+            with self.subTest(args=args):
+                r = self.call(*args)
+                self.assertEqual(r.returncode, 2)
+                self.assertEqual(r.stdout, "")
+                self.assertIn(words, r.stderr)
+        self.assertEqual(self.left(), set())
+
+    def test_help_and_version_go_to_standard_output(self):
+        r = self.call("--help")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        for word in ["run CASE", "--scenario", "--no-files", "Exit status"]:
+            self.assertIn(word, r.stdout)
+        r = self.call("--version")
+        self.assertEqual(r.returncode, 0)
+        self.assertRegex(r.stdout, r"^kentledge \d+\.\d+\.\d+\n$")
+
+    def test_both_spellings_of_the_catalogue(self):
+        a, b = self.call("catalogue", "soils"), self.call("catalog", "soils")
+        self.assertEqual((a.returncode, b.returncode), (0, 0))
+        self.assertEqual(a.stdout, b.stdout)
+        self.assertNotIn("pipe_class", a.stdout)
+
+    def test_two_dashes_end_the_options(self):
+        shutil.copy(self.dir / "main.cfg", self.dir / "--wide.cfg")
+        self.assertEqual(self.call("check", "--", "--wide.cfg").returncode, 0)
+
+    # ---- input -----------------------------------------------------------------------
+
+    def test_a_bad_case_is_status_2_and_nothing_is_written(self):
+        bad = CASE.replace('level = "80 m"', 'level = "80 bar"').replace(
+            'size = "300 mm"', 'size = 300').replace('title = "Little', 'titel = "Little')
+        (self.dir / "main.cfg").write_text(bad)
+        r = self.call("run", "main.cfg")
+        self.assertEqual((r.returncode, r.stdout), (2, ""))
+        lines = r.stderr.splitlines()
+        self.assertEqual(lines[-1], "3 errors; nothing was run")
+        for line in lines[:-1]:
+            self.assertRegex(line, r"^main\.cfg:\d+: ")
+        places = [int(line.split(":")[1]) for line in lines[:-1]]
+        self.assertEqual(places, sorted(places))
+        self.assertEqual(self.left(), set())
+
+    def test_a_case_that_is_not_there_is_status_2(self):
+        r = self.call("run", "mian.cfg")
+        self.assertEqual(r.returncode, 2)
+        self.assertIn("mian.cfg", r.stderr)
+
+    def test_an_unknown_name_is_status_2_and_the_nearest_is_offered(self):
+        r = self.call("run", "main.cfg", "--scenario", "shut-2s")
+        self.assertEqual(r.returncode, 2)
+        self.assertIn("did you mean 'shut-3s'", r.stderr)
+        r = self.call("explain", "main.cfg", "PI2")
+        self.assertEqual(r.returncode, 2)
+        self.assertIn("did you mean 'PI1'", r.stderr)
+        r = self.call("explain", "main.cfg", "somewhere-else")
+        self.assertIn("PI1, E", r.stderr)
+        self.assertEqual(self.left(), set())
+
+    def test_a_dash_is_standard_input(self):
+        r = self.call("run", "-", input=CASE)
+        self.assertEqual(r.returncode, 0)
+        self.assertEqual(self.left(), {"standard-input-results"})
+        plain = self.call("run", "main.cfg", "--no-files").stdout.splitlines()
+        self.assertEqual(r.stdout.splitlines()[:-1], plain[:-1])  # but for the file's name
+
+    def test_a_missing_catalogue_is_status_2(self):
+        env = dict(self.env, KENTLEDGE_CONFIG=str(self.dir / "nowhere"))
+        r = self.call("catalogue", env=env)
+        self.assertEqual(r.returncode, 2)
+        self.assertIn("nowhere", r.stderr)
+
+    # ---- results ---------------------------------------------------------------------
+
+    def test_a_run_writes_its_folder_and_prints_its_tables(self):
+        r = self.call("run", "main.cfg")
+        self.assertEqual(r.returncode, 0)
+        self.assertIn("results in main-results", r.stderr)
+        self.assertEqual({p.name for p in (self.dir / "main-results").iterdir()}, FILES)
+        self.assertEqual(self.left(), {"main-results"})
+        self.assertIn("Little main of Øvrevann", r.stdout)
+        self.assertLessEqual(max(map(len, r.stdout.splitlines())), 100)
+        with open(self.dir / "main-results" / "summary.csv", newline="",
+                  encoding="utf-8") as f:
+            rows = list(csv.DictReader(f))
+        self.assertEqual([row["point"] for row in rows], ["PI1", "E"])
+        for row in rows:
+            self.assertNotIn(None, row)
+            self.assertGreater(float(row["thrust [kN]"]), 0.0)
+        data = json.loads((self.dir / "main-results" / "results.json").read_text())
+        self.assertEqual([s["id"] for s in data["scenarios"]], ["shut-3s", "shut-30s"])
+
+    def test_one_scenario_may_be_asked_for_twice_and_runs_once(self):
+        r = self.call("run", "main.cfg", "-s", "shut-3s", "--scenario=shut-3s",
+                      "--format", "json", "--no-files", "--quiet")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        self.assertEqual([s["id"] for s in json.loads(r.stdout)["scenarios"]], ["shut-3s"])
+        self.assertEqual(self.left(), set())
+
+    def test_standard_output_has_what_the_folder_has(self):
+        for form, name in [("csv", "summary.csv"), ("json", "results.json")]:
+            r = self.call("run", "main.cfg", "--format", form, "--out", "here")
+            self.assertEqual(r.returncode, 0)
+            self.assertEqual(r.stdout, (self.dir / "here" / name).read_text())
+
+    def test_runs_repeat_to_the_bit_whatever_the_threads(self):
+        one = self.call("run", "main.cfg", "--format=json", "--no-files", "--threads=1")
+        many = self.call("run", "main.cfg", "--format=json", "--no-files", "--threads=4")
+        self.assertEqual(one.returncode, 0)
+        self.assertEqual(one.stdout, many.stdout)
+
+    def test_units_may_be_chosen(self):
+        r = self.call("run", "main.cfg", "--units", "us", "--no-files")
+        self.assertEqual(r.returncode, 0)
+        self.assertIn("psi", r.stdout)
+        self.assertNotIn(" bar", r.stdout)
+
+    def test_decimal_points_stay_points_in_every_locale(self):
+        known = subprocess.run(["locale", "-a"], stdout=subprocess.PIPE, encoding="utf-8")
+        if "de_DE.utf8" not in known.stdout.split():
+            self.skipTest("the locale de_DE.UTF-8 is not installed")
+        plain = self.call("run", "main.cfg", "--format=csv", "--no-files")
+        env = dict(self.env, LC_ALL="de_DE.UTF-8", LANG="de_DE.UTF-8")
+        other = self.call("run", "main.cfg", "--format=csv", "--no-files", env=env)
+        self.assertEqual(plain.stdout, other.stdout)
+
+    def test_strict_is_status_3_and_the_results_are_there(self):
+        self.assertEqual(self.call("run", "main.cfg", "--strict").returncode, 0)
+        (self.dir / "peat.cfg").write_text(PEAT)
+        r = self.call("run", "peat.cfg", "--strict")
+        self.assertEqual(r.returncode, 3)
+        self.assertIn("--strict", r.stderr)
+        self.assertIn("none: peat-PT", r.stdout)
+        self.assertTrue((self.dir / "peat-results" / "results.json").exists())
+        self.assertEqual(self.call("run", "peat.cfg", "--no-files").returncode, 0)
+
+    # ---- what cannot be written ------------------------------------------------------
+
+    def test_a_folder_that_is_not_ours_is_left_alone(self):
+        (self.dir / "thesis").mkdir()
+        (self.dir / "thesis" / "chapter.txt").write_text("ten years' work")
+        r = self.call("run", "main.cfg", "--out", "thesis")
+        self.assertEqual((r.returncode, r.stdout), (1, ""))
+        self.assertIn("thesis", r.stderr)
+        self.assertEqual([p.name for p in (self.dir / "thesis").iterdir()], ["chapter.txt"])
+        self.assertEqual(self.left(), {"thesis"})
+
+    def test_our_own_folder_is_replaced_whole(self):
+        self.assertEqual(self.call("run", "main.cfg").returncode, 0)
+        r = self.call("run", "main.cfg", "--scenario", "shut-3s")
+        self.assertEqual(r.returncode, 0)
+        names = {p.name for p in (self.dir / "main-results").iterdir()}
+        self.assertEqual(names, {n for n in FILES if "30s" not in n})
+
+    def test_a_place_that_is_not_there_is_status_1(self):
+        r = self.call("run", "main.cfg", "--out", "no/such/place")
+        self.assertEqual((r.returncode, r.stdout), (1, ""))
+        self.assertEqual(self.left(), set())
+
+    def test_a_full_disk_on_standard_output_is_status_1_and_leaves_no_folder(self):
+        for args in (["run", "main.cfg"], ["check", "main.cfg"], ["catalogue"],
+                     ["explain", "main.cfg", "PI1"], ["--help"], ["--version"]):
+            with self.subTest(args=args), open("/dev/full", "w") as full:
+                r = self.call(*args, stdout=full)
+                self.assertEqual(r.returncode, 1)
+                self.assertEqual(len(r.stderr.splitlines()), 1, r.stderr)
+        self.assertEqual(self.left(), set())
+
+    def test_a_closed_pipe_is_status_1_and_leaves_the_old_results(self):
+        self.assertEqual(self.call("run", "main.cfg").returncode, 0)
+        before = (self.dir / "main-results").stat().st_ino
+        reader, writer = os.pipe()
+        os.close(reader)
+        with os.fdopen(writer, "w") as pipe:
+            r = self.call("run", "main.cfg", stdout=pipe)
+        self.assertEqual(r.returncode, 1)
+        self.assertEqual((self.dir / "main-results").stat().st_ino, before)
+        self.assertEqual(self.left(), {"main-results"})
+
+    def test_a_closed_standard_output_is_status_1_and_spoils_no_file(self):
+        command = f'"{PROGRAM}" run main.cfg >&-'
+        r = subprocess.run(["sh", "-c", command], cwd=self.dir, env=self.env,
+                           stderr=subprocess.PIPE, encoding="utf-8", timeout=60)
+        self.assertEqual(r.returncode, 1)
+        self.assertEqual(self.left(), set())
+
+    # ---- check and explain -----------------------------------------------------------
+
+    def test_check_writes_nothing_and_says_what_it_understood(self):
+        r = self.call("check", "main.cfg")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        for word in ["Fittings found", "bend 45.", "Assumed", "DI-EN545-C40-DN300"]:
+            self.assertIn(word, r.stdout)
+        self.assertEqual(self.left(), set())
+
+    def test_every_formula_of_every_case_gives_its_printed_result(self):
+        cases = sorted((SOURCE / "cases").glob("*/*/*.cfg"))
+        self.assertTrue(cases)
+        worked = 0
+        for case in cases:
+            data = self.call("run", str(case), "--format=json", "--no-files")
+            self.assertEqual(data.returncode, 0, data.stderr)
+            for fitting in json.loads(data.stdout)["fittings"]:
+                for units in ("SI", "US"):
+                    text = self.call("explain", str(case), fitting["id"], "--units", units)
+                    self.assertEqual(text.returncode, 0, text.stderr)
+                    r = subprocess.run([WORK_OUT], input=text.stdout, encoding="utf-8",
+                                       stdout=subprocess.PIPE, stderr=subprocess.STDOUT,
+                                       timeout=60)
+                    self.assertEqual(r.returncode, 0, f"{case} {fitting['id']}\n{r.stdout}")
+                    worked += int(re.search(r"(\d+) formulas", r.stdout).group(1))
+        self.assertGreater(worked, 100)
+
+    # ---- the manual ------------------------------------------------------------------
+
+    def test_every_command_of_the_manual_runs(self):
+        manual = (SOURCE / "docs" / "manual.md").read_text()
+        commands = re.findall(r"^\$ kentledge (.*)$", manual, re.M)
+        self.assertGreaterEqual(len(commands), 6)
+        shutil.copytree(SOURCE / "cases", self.dir / "cases")
+        for command in commands:
+            with self.subTest(command=command):
+                r = self.call(*command.split())
+                self.assertEqual(r.returncode, 0, r.stderr)
+
+    def test_the_manual_has_every_command_and_option(self):
+        manual = (SOURCE / "docs" / "manual.md").read_text()
+        shown = self.call("--help").stdout
+        for option in re.findall(r"--[a-z-]+", shown):
+            self.assertIn(f"`{option}", manual)
+        for command in ("run", "check", "explain", "catalogue"):
+            self.assertIn(f"`{command}", manual)
+
+
+if __name__ == "__main__":
+    unittest.main(argv=sys.argv[:1])
