@@ -102,12 +102,14 @@ static void fill_site(kent_filling *f)
     kent_record r;
     const bool there = read_group(f, &f->root, "site", &r);
     kent_model *m = f->model;
-    if (!there || !kent_record_has(&r, "altitude")) {
-        kent_fill_assume(f, "barometric pressure", "that of sea level",
-                         "no altitude given");
-    }
     m->barometric = kent_barometric_pressure(given(&r, there, "altitude", 0.0));
     m->gravity = given(&r, there, "gravity", m->gravity);
+    /* Only the vapour limit of a surge knows the weather. */
+    if (kent_record_has(&f->root, "pipes") &&
+        !(there && kent_record_has(&r, "altitude"))) {
+        kent_fill_assume_value(f, "barometric pressure", m->barometric, KENT_PRESSURE,
+                               "no altitude given: sea level");
+    }
 }
 
 static void fill_ground(kent_filling *f)

@@ -194,12 +194,10 @@ int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char 
 /* ---- fittings ---------------------------------------------------------------------
  */
 
-static void fill_port(kent_filling *f, const kent_record *record, double face,
-                      kent_port *p)
+static void fill_port(const kent_record *record, double face, kent_port *p)
 {
     const double inside = kent_record_number(record, "inside_diameter");
     const double outside = kent_record_number(record, "outside_diameter");
-    (void)f;
     *p = (kent_port){
         .direction = kent_vec3_unit(kent_record_field(record, "direction")->vector),
         .inside_diameter = inside,
@@ -258,7 +256,7 @@ static void fill_ports(kent_filling *f, kent_record *record, kent_fitting_note *
         }
         kent_record_read(&f->reader, twig, "port", record->label, i + 1, &port);
         record->sound = record->sound && port.sound;
-        fill_port(f, &port, n->face, &m->given_ports[n->port_first + i]);
+        fill_port(&port, n->face, &m->given_ports[n->port_first + i]);
     }
     if (record->sound) check_flows(f, record, n);
 }

@@ -266,6 +266,9 @@ static void see_value(scanner *s)
 {
     if (s->last == TOKEN_NAME) {
         complain(s, top(s)->line, "'=' is missing after '%s'", s->last_name);
+    } else if (s->last == TOKEN_VALUE && s->nest > 0 &&
+               s->brackets[s->nest - 1].open != '{') {
+        complain(s, top(s)->line, "a ',' is missing before this element of the list");
     }
     s->last = TOKEN_VALUE;
 }
@@ -275,6 +278,9 @@ static size_t lex_string(scanner *s, const char *p)
     const int line = top(s)->line;
     size_t n = 1;
     while (p[n] != '"' && p[n] != '\n' && p[n] != '\0') {
+        if (p[n] == '\\' && p[n + 1] == 'x') {
+            complain(s, line, "\\x in a text is not read; write the character itself");
+        }
         n += p[n] == '\\' && p[n + 1] != '\0' && p[n + 1] != '\n' ? 2 : 1;
     }
     if (p[n] != '"') {
@@ -406,6 +412,13 @@ static void open_bracket(scanner *s, char open)
         return;
     }
     see_value(s);
+    if (s->nest > 0 && s->brackets[s->nest - 1].open == '[') {
+        complain(s, src->line,
+                 "'%c' stands in [ ], which holds numbers and texts only; a "
+                 "list of groups or lists stands in ( )",
+                 open);
+        s->stopped = true;
+    }
     s->last = TOKEN_OTHER;
     s->brackets[s->nest++] =
         (bracket){.open = open, .file = src->file, .line = src->line};
