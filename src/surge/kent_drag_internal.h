@@ -5,6 +5,9 @@
 #include "kent_steady.h"
 #include "kent_waves_internal.h"
 
+/* Speeds in bins of 1/16 of an octave, from Reynolds number 1 up. */
+enum { KENT_DRAG_OCTAVE = 16, KENT_DRAG_BINS = 30 * KENT_DRAG_OCTAVE };
+
 typedef struct kent_drag_span {
     const kent_friction *friction; /* the model's */
     double per_factor;             /* k of a Darcy factor of 1, 1/m: 07.7 */
@@ -12,13 +15,15 @@ typedef struct kent_drag_span {
     double stiffening;             /* 1 where explicit; 07.11 */
     double speed_per_metre;        /* 1/s: |V| = |p - m| x this, 07.6 */
     double slowest;                /* m/s, of Reynolds number 1: slower counts as it */
+    double *factor; /* [KENT_DRAG_BINS + 1] at the bins' edges; 0: not asked for yet */
 } kent_drag_span;
 
 typedef struct kent_drag {
     bool follows; /* quasi-steady: k follows the flow */
     kent_drag_span *spans;
-    bool *implicit; /* [span_count] swept point-implicitly */
-    double *swing;  /* [node_total] m, |p - m| at which k was last worked out */
+    double *factors; /* the spans' tables */
+    bool *implicit;  /* [span_count] swept point-implicitly */
+    double *swing;   /* [node_total] m, |p - m| at which k was last worked out */
     size_t next_span, next_node; /* of the rotation; next_node counts in its span */
 } kent_drag;
 
@@ -33,7 +38,8 @@ void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
                      kent_waves *w);
 
 /* Quasi-steady: k wherever the flow has moved by more than 1/32 since k was worked out,
- * and of a few more nodes in rotation. Does nothing otherwise. */
+ * by a factor interpolated between the edges of its bin; and of a few more nodes in
+ * rotation, by the law itself. Does nothing otherwise. */
 void kent_drag_refresh(kent_drag *d, kent_waves *w);
 
 #endif
