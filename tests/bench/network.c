@@ -90,8 +90,9 @@ static void add_events(kent_build *b, plan *p)
     const int scenario = kent_build_scenario(b, "all", 50.0);
     for (size_t v = 0; v < b->model->valve_count; v++) {
         b->model->valves[v].opening = 0.3 + 0.7 * draw(p);
-        kent_build_ramp(b, scenario, KENT_EVENT_VALVE, (int)v, 0.05 + 2.0 * draw(p),
-                        0.5 + 4.0 * draw(p), v % 3 == 0 ? 1.0 : 0.1 * (double)(v % 3));
+        const double start = 0.05 + 2.0 * draw(p), ramp = 0.5 + 4.0 * draw(p); /* s */
+        kent_build_ramp(b, scenario, KENT_EVENT_VALVE, (int)v, start, ramp,
+                        v % 3 == 0 ? 1.0 : 0.1 * (double)(v % 3));
     }
 }
 
