@@ -6,8 +6,6 @@
 #include <string.h>
 
 #define NO_LIMIT             -INFINITY, INFINITY, false
-#define FROM(least)          (least), INFINITY, false
-#define ABOVE(least)         (least), INFINITY, true
 #define WITHIN(least, most)  (least), (most), false
 #define BETWEEN(least, most) (least), (most), true /* the least itself is refused */
 
@@ -664,9 +662,6 @@ const char *kent_spelling(const char *word)
         {"non_return_valve", "check_valve"},
         {"taper", "reducer"},
         {"gray-iron", "grey-iron"},
-        {"color", "colour"},
-        {"center", "centre"},
-        {"meter", "metre"},
     };
     for (size_t i = 0; i < sizeof VARIANTS / sizeof VARIANTS[0]; i++) {
         if (strcmp(VARIANTS[i].variant, word) == 0) return VARIANTS[i].ours;
