@@ -122,6 +122,8 @@ static size_t choose(struct argp_state *state, const char *what, const char *giv
     kent_text all = {0};
     for (size_t i = 0; i < count; i++) {
         if (strcasecmp(given, words[i]) == 0) return i;
+    }
+    for (size_t i = 0; i < count; i++) {
         kent_text_add(&all, "%s%s", i > 0 ? ", " : "", words[i]);
     }
     argp_error(state, "'%s' is not %s; one of %s", given, what, kent_text_of(&all));

@@ -110,7 +110,7 @@ static void derive_angle(const kent_sheet *s, size_t i, size_t j, const char *sa
 
     (void)snprintf(formula, sizeof formula, "%s(n%dx*n%dx+n%dy*n%dy+n%dz*n%dz)",
                    bend ? "-" : "", a, b, a, b, a, b);
-    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "5.4" : "5.7",
+    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "05.4" : "05.7",
                          "cosine of the angle, by the two directions");
     kent_derivation_put(d, "angle", angle, KENT_ANGLE, KENT_COMPUTED, says);
     kent_derivation_work(d, "c'", cos(angle), KENT_RATIO, "cos(angle)", "",

@@ -67,13 +67,16 @@ static void print_input(const kent_line *line, kent_system system, size_t limit,
     kent_text left = {0}, right = {0};
     kent_line_value(line, system, value, sizeof value);
     kent_text_add(&left, "  %s = %s", line->symbol, value);
-    while (!left.failed && left.length + 3 < VALUE_COLUMN) {
-        kent_text_add(&left, " ");
-    }
     kent_text_add(&right, "%s%s(%s)", line->says, line->says[0] != '\0' ? " " : "",
                   source_words(line->source));
+    const size_t columns = kent_text_columns(kent_text_of(&left));
+    const size_t pad = columns + 3 < VALUE_COLUMN ? VALUE_COLUMN - 3 - columns : 0;
+    const size_t words = kent_text_columns(kent_text_of(&right));
     kent_text_add(out, "%s", kent_text_of(&left));
-    add_words(kent_text_columns(kent_text_of(&left)), limit, kent_text_of(&right), out);
+    if (limit == 0 || columns + pad + 3 + words <= limit) {
+        kent_text_add(out, "%*s", (int)pad, "");
+    }
+    add_words(columns + pad, limit, kent_text_of(&right), out);
     out->failed = out->failed || left.failed || right.failed;
     kent_text_clear(&right);
     kent_text_clear(&left);

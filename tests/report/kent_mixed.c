@@ -81,8 +81,10 @@ static void bury(kent_build *b)
 /* A letter behind it keeps names apart that are otherwise the same. */
 static void rename_one(char id[KENT_ID], const char *name, bool letter, size_t index)
 {
-    const char tail[2] = {letter ? (char)('a' + index % 26) : '\0', '\0'};
-    (void)snprintf(id, KENT_ID, "%s%s", name, tail);
+    static const char *const TAILS[] = {"a", "b", "c", "d", "e", "f",
+                                        "g", "h", "i", "j", "k", "l"};
+    const size_t count = sizeof TAILS / sizeof TAILS[0];
+    (void)snprintf(id, KENT_ID, "%s%s", name, letter ? TAILS[index % count] : "");
 }
 
 static void rename_all(kent_model *m, bool long_names)

@@ -52,8 +52,9 @@ static void a_fitting_with_ports_of_its_own_has_only_what_was_given(void **state
     const int own = kent_build_fitting_of(&mixed.build, "B7");
     const kent_pressures p = kent_pressures_of(mixed.results, (size_t)own);
     assert_true(isfinite(p.at[KENT_PRESSURE_GIVEN]) != 0);
-    for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++)
+    for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
         assert_true(isnan(p.at[k]) != 0);
+    }
     assert_true(isnan(p.rating) != 0);
     kent_mixed_clear(&mixed);
 }
