@@ -10,6 +10,8 @@
 #include <stdlib.h>
 #include <string.h>
 
+static const double STANDARD_GRAVITY = 9.80665; /* m/s2: what nobody states */
+
 /* What the parts of one hand calculation share. */
 typedef struct kent_sheet {
     const kent_results *results;
@@ -214,6 +216,83 @@ static void print_cases(const kent_sheet *s)
     }
 }
 
+static bool is_static(const kent_load_case *c)
+{
+    return c->scenario < 0 && c->kind == KENT_CASE_STATIC;
+}
+
+static const char *head_words(const kent_model *m, const kent_load_case *c)
+{
+    if (c->scenario >= 0) return "head at that instant";
+    if (!is_static(c)) return "head of the steady state";
+    return isnan(m->loads.static_level) ? "highest level connected"
+                                        : "static level stated";
+}
+
+/* The pressure of one case out of a level, a head or the test gauge; n: its number. */
+static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c, int n,
+                                 kent_derivation *d)
+{
+    const kent_model *m = s->model;
+    const double p = c->worst[KENT_RESULTANT].pressure;
+    const double head = p / (m->water.density * m->gravity) + s->fitting->at.z;
+    char formula[64];
+    if (c->scenario < 0 && c->kind == KENT_CASE_TEST) {
+        kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE,
+                             "pg+rho*g*(zg-z)", "09.1", "test pressure, by elevation");
+        return;
+    }
+    kent_derivation_put(d, symbol("H%d", n).text, head, KENT_LENGTH, KENT_COMPUTED,
+                        head_words(m, c));
+    (void)snprintf(formula, sizeof formula, "rho*g*(H%d-z)", n);
+    kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE, formula,
+                         is_static(c) ? "09.2" : "09.3", "pressure at the centre");
+}
+
+/* Each case of a fitting in a network by arithmetic: pressure, thrust, factored. */
+static void print_case_arithmetic(const kent_sheet *s)
+{
+    const kent_model *m = s->model;
+    const int gauge = m->loads.test_gauge;
+    kent_derivation d = {0};
+    if (s->fitting->point < 0) return;
+    kent_derivation_heading(&d, "Each case by arithmetic");
+    kent_derivation_put(&d, "rho", m->water.density, KENT_DENSITY, KENT_COMPUTED,
+                        "density of the water");
+    kent_derivation_put(&d, "g", m->gravity, KENT_ACCELERATION,
+                        m->gravity == STANDARD_GRAVITY ? KENT_ASSUMED : KENT_GIVEN,
+                        "gravity");
+    kent_derivation_put(&d, "z", s->fitting->at.z, KENT_LENGTH, KENT_GIVEN,
+                        "level of the fitting's centre");
+    if (isfinite(m->loads.test_pressure)) {
+        kent_derivation_put(&d, "pg", m->loads.test_pressure, KENT_PRESSURE, KENT_GIVEN,
+                            "test pressure at its gauge");
+        kent_derivation_put(
+            &d, "zg", gauge >= 0 ? m->points[gauge].at.z : s->fitting->at.z,
+            KENT_LENGTH, gauge >= 0 ? KENT_GIVEN : KENT_ASSUMED, "level of the gauge");
+    }
+    for (size_t i = 0; i < s->loads->count; i++) {
+        const kent_load_case *c = &s->loads->cases[i];
+        const kent_instant *at = &c->worst[KENT_RESULTANT];
+        const int n = (int)i + 1;
+        char formula[64];
+        if (!at->set) continue;
+        kent_derivation_heading(&d, c->name);
+        derive_case_pressure(s, c, n, &d);
+        const double thrust = kent_vec3_length(at->balance.thrust);
+        kent_derivation_put(&d, symbol("T%d", n).text, thrust, KENT_FORCE,
+                            KENT_COMPUTED, "thrust, by the balance of its ports");
+        kent_derivation_put(&d, symbol("SF%d", n).text, c->safety_factor, KENT_RATIO,
+                            KENT_GIVEN, "factor of this case");
+        (void)snprintf(formula, sizeof formula, "SF%d*T%d", n, n);
+        kent_derivation_work(&d, symbol("F%d", n).text, c->safety_factor * thrust,
+                             KENT_FORCE, formula, "10.11", "factored");
+    }
+    kent_text_add(s->out, "\n");
+    kent_steps_print(&d, s->units, s->limit, s->out);
+    kent_derivation_clear(&d);
+}
+
 /* ---- the calculation, and what stands beside it -----------------------------------
  */
 
@@ -355,6 +434,7 @@ kent_status kent_report_explain(const kent_results *r, int fitting,
     print_title(&s);
     print_geometry(&s);
     print_cases(&s);
+    print_case_arithmetic(&s);
     kent_text_add(&out, "\n");
     kent_steps_print(&s.holding->derivation, s.units, s.limit, &out);
     kent_text_add(&out, "\n");

@@ -79,6 +79,10 @@ static void the_tables_say_what_an_engineer_must_know(void **state)
     assert_contains(text, "10 fittings · 2 scenarios");
     assert_contains(text, "none: peat");
     assert_contains(text, "joint takes it");
+    assert_contains(text, "reducer to 400");
+    assert_contains(text,
+                    "gravity "); /* the crest's weight, and beside it on a line of */
+    assert_contains(text, " face "); /* its own the face that takes the sideways part */
     assert_contains(text, "1 value assumed");
     assert_contains(text, "two surveys disagree, says the case");
     assert_contains(text, "competent, licensed engineers");
