@@ -14,7 +14,7 @@ typedef struct law_value {
     double factor, elasticity;
 } law_value;
 
-/* 03.4: x = 1/sqrt f solves F(x) = x + C ln(a + b x) = 0 with C = 2/ln 10,
+/* 3.4: x = 1/sqrt f solves F(x) = x + C ln(a + b x) = 0 with C = 2/ln 10,
  * a = roughness/3.7, b = 2.51/Re. F is nearly straight in x, and its curvature is at
  * hand: Halley's method from a middling x leaves less than 1e-14 after three steps. */
 static law_value colebrook_white(double reynolds, double relative_roughness)
@@ -38,10 +38,10 @@ static law_value colebrook_white(double reynolds, double relative_roughness)
     u = b / (a + b * x);
     const double f = 1.0 / (x * x);
     return (law_value){f,
-                       -2.0 * TWO_OVER_LN10 * u / (1.0 + TWO_OVER_LN10 * u)}; /* 03.5 */
+                       -2.0 * TWO_OVER_LN10 * u / (1.0 + TWO_OVER_LN10 * u)}; /* 3.5 */
 }
 
-/* 03.2 to 03.6; reynolds > 0 */
+/* 3.2 to 3.6; reynolds > 0 */
 static law_value colebrook_all(double reynolds, double relative_roughness)
 {
     if (reynolds <= LAMINAR_TO) return (law_value){64.0 / reynolds, -1.0};
@@ -62,7 +62,7 @@ double kent_colebrook(double reynolds, double relative_roughness)
     return colebrook_all(re, relative_roughness).factor;
 }
 
-/* 03.7 */
+/* 3.7 */
 double kent_swamee_jain(double reynolds, double relative_roughness)
 {
     const double inside = relative_roughness / 3.7 + 5.74 / kent_pow(reynolds, 0.9);
@@ -71,7 +71,7 @@ double kent_swamee_jain(double reynolds, double relative_roughness)
 }
 
 /* The factor at a speed > 0 and the Reynolds number that belongs to it, laminar floor
- * included: 03.8 to 03.11 */
+ * included: 3.8 to 3.11 */
 static law_value value_at(const kent_friction *friction, double v, double reynolds)
 {
     const law_value laminar = {64.0 / reynolds, -1.0};
@@ -111,7 +111,7 @@ double kent_friction_factor(const kent_friction *friction, double speed)
     return value_at(friction, v, v * per_speed).factor;
 }
 
-/* 03.1, 03.12 */
+/* 3.1, 3.12 */
 double kent_friction_slope(const kent_friction *friction, double flow,
                            double *derivative)
 {

@@ -8,25 +8,25 @@ static double across(double reynolds, double laminar, double turbulent)
     return laminar + (turbulent - laminar) * (reynolds - 2000.0) / 2000.0;
 }
 
-/* 04.4 */
+/* 4.4 */
 double kent_momentum_factor(double reynolds, double friction_factor)
 {
     return across(reynolds, 4.0 / 3.0, 1.0 + 0.98 * friction_factor);
 }
 
-/* 04.5 */
+/* 4.5 */
 double kent_energy_factor(double reynolds, double friction_factor)
 {
     return across(reynolds, 2.0, 1.0 + 2.7 * friction_factor);
 }
 
-/* Mean of (u/umax)^power over the section: 04.6. */
+/* Mean of (u/umax)^power over the section: 4.6. */
 static double power_mean(double n, double power)
 {
     return 2.0 * n * n / ((n + power) * (2.0 * n + power));
 }
 
-/* 04.7 */
+/* 4.7 */
 void kent_power_profile(double n, double *mean, double *momentum, double *energy)
 {
     const double v = power_mean(n, 1.0);

@@ -31,7 +31,7 @@ static void put_point(kent_valve_curve *curve, double opening, double capacity)
     curve->count++;
 }
 
-/* 04.2 */
+/* 4.2 */
 bool kent_valve_curve_from_loss(const double *opening, const double *loss, size_t count,
                                 kent_valve_curve *out)
 {
@@ -75,13 +75,13 @@ double kent_valve_relative_capacity(const kent_valve_curve *curve, double openin
     return c[i - 1] + (c[i] - c[i - 1]) * (opening - o[i - 1]) / (o[i] - o[i - 1]);
 }
 
-/* 04.1 */
+/* 4.1 */
 double kent_valve_capacity_from_loss(double loss, double size, double gravity)
 {
     return 0.25 * PI * size * size * sqrt(2.0 * gravity / loss);
 }
 
-/* 04.3: flow at a drop of `drop` Pa of water of 1000 kg/m3 */
+/* 4.3: flow at a drop of `drop` Pa of water of 1000 kg/m3 */
 static double capacity_from_test(double flow, double drop, double gravity)
 {
     return flow / sqrt(drop / (1000.0 * gravity));

@@ -76,7 +76,7 @@ static double series_bend(const term *terms, size_t count, double x)
     return sum;
 }
 
-/* Pa. source IAPWS R7-97(2012), region 4, eq. 30: 01.6 */
+/* Pa. source IAPWS R7-97(2012), region 4, eq. 30: 1.6 */
 static double saturation_pressure(double temperature)
 {
     const double t =
@@ -90,7 +90,7 @@ static double saturation_pressure(double temperature)
     return 1e6 * root * root * root * root;
 }
 
-/* Pa s. source IAPWS SR6-08(2011): 01.5 */
+/* Pa s. source IAPWS SR6-08(2011): 1.5 */
 static double viscosity_at(double temperature)
 {
     const double t = temperature / 300.0;
@@ -107,23 +107,23 @@ kent_water kent_water_at(double temperature)
     const double hot = REFERENCE / (593.0 - temperature);
     const double cold = REFERENCE / (temperature - 232.0);
 
-    /* 01.1: specific volume, m3/kg */
+    /* 1.1: specific volume, m3/kg */
     const double v = GAS_CONSTANT * REFERENCE / PRESSURE *
                      (VOLUME_CONSTANT + series(VOLUME_HOT, COUNT(VOLUME_HOT), hot) +
                       series(VOLUME_COLD, COUNT(VOLUME_COLD), cold));
-    /* 01.2: its changes with temperature, m3/(kg K), and pressure, m3/(kg Pa) */
+    /* 1.2: its changes with temperature, m3/(kg K), and pressure, m3/(kg Pa) */
     const double v_t = GAS_CONSTANT / PRESSURE *
                        (series_slope(VOLUME_HOT, COUNT(VOLUME_HOT), hot) -
                         series_slope(VOLUME_COLD, COUNT(VOLUME_COLD), cold));
     const double v_p = GAS_CONSTANT * REFERENCE / (PRESSURE * PRESSURE) *
                        (series(SQUEEZE_HOT, COUNT(SQUEEZE_HOT), hot) +
                         series(SQUEEZE_COLD, COUNT(SQUEEZE_COLD), cold));
-    /* 01.3: heat capacity at constant pressure, J/(kg K) */
+    /* 1.3: heat capacity at constant pressure, J/(kg K) */
     const double c_p =
         -GAS_CONSTANT *
         (GIBBS_LOGARITHM + tau * series_bend(GIBBS_HOT, COUNT(GIBBS_HOT), hot) +
          tau * series_bend(GIBBS_COLD, COUNT(GIBBS_COLD), cold));
-    /* 01.4: speed of sound; the modulus that goes with it is the adiabatic one */
+    /* 1.4: speed of sound; the modulus that goes with it is the adiabatic one */
     const double c = sqrt(-v * v / (v_p + temperature * v_t * v_t / c_p));
 
     return (kent_water){
@@ -136,7 +136,7 @@ kent_water kent_water_at(double temperature)
     };
 }
 
-/* 01.7, 01.8 */
+/* 1.7, 1.8 */
 double kent_barometric_pressure(double altitude)
 {
     if (!(altitude >= -500.0 && altitude <= 11000.0)) return NAN;
@@ -148,7 +148,7 @@ double kent_barometric_pressure(double altitude)
     return 101325.0 * pow(1.0 - lapse * level / 288.15, power);
 }
 
-/* 01.9 */
+/* 1.9 */
 double kent_vapour_head(const kent_water *water, double z, double barometric,
                         double gravity)
 {

@@ -2,14 +2,14 @@
 
 #include <math.h>
 
-/* 02.3 */
+/* 2.3 */
 double kent_wave_equivalent_thickness(const kent_wall *wall)
 {
     if (!(wall->lining > 0.0)) return wall->thickness;
     return wall->thickness + wall->lining * wall->lining_modulus / wall->modulus;
 }
 
-/* What axial support leaves of the hoop strain: 02.4. */
+/* What axial support leaves of the hoop strain: 2.4. */
 static double axial_share(double poisson, kent_axial_support support)
 {
     switch (support) {
@@ -23,7 +23,7 @@ static double axial_share(double poisson, kent_axial_support support)
     return NAN;
 }
 
-/* 02.4 thin, 02.5 thick */
+/* 2.4 thin, 2.5 thick */
 double kent_wave_support_factor(const kent_wall *wall, kent_axial_support support,
                                 bool thin)
 {
@@ -35,7 +35,7 @@ double kent_wave_support_factor(const kent_wall *wall, kent_axial_support suppor
     return 2.0 * e / d * (1.0 + wall->poisson) + d / (d + e) * share;
 }
 
-/* 02.1, 02.2 */
+/* 2.1, 2.2 */
 double kent_wave_speed(const kent_wall *wall, kent_axial_support support, bool thin,
                        double density, double bulk_modulus)
 {

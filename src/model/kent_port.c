@@ -11,7 +11,7 @@ static const double RIGHT_ANGLE = 0.5 * 3.14159265358979323846;
 
 static double plan_length(kent_vec3 a) { return hypot(a.x, a.y); }
 
-/* Equation 05.4: flow comes in against the first direction, goes out along the second.
+/* Equation 5.4: flow comes in against the first direction, goes out along the second.
  */
 double kent_ports_turn(const kent_port ports[2])
 {
@@ -19,7 +19,7 @@ double kent_ports_turn(const kent_port ports[2])
                            ports[1].direction);
 }
 
-/* Equation 05.5. */
+/* Equation 5.5. */
 double kent_ports_plan_turn(const kent_port ports[2])
 {
     const kent_vec3 in = kent_vec3_scale(-1.0, ports[0].direction);
@@ -29,7 +29,7 @@ double kent_ports_plan_turn(const kent_port ports[2])
     return atan2(in.x * out.y - in.y * out.x, in.x * out.x + in.y * out.y);
 }
 
-/* By equation 05.6, the way the bend pushes. */
+/* By equation 5.6, the way the bend pushes. */
 kent_orientation kent_ports_orientation(const kent_port ports[2])
 {
     const kent_vec3 push =

@@ -40,7 +40,7 @@ static void measure_without_plan(kent_model *m, const kent_pipe *pipe,
     }
 }
 
-/* Equation 05.1: lengths in space, stretched to the given length where there is one. */
+/* Equation 5.1: lengths in space, stretched to the given length where there is one. */
 static void measure_surveyed(kent_model *m, const kent_pipe *pipe,
                              kent_complaints *complaints)
 {

@@ -14,7 +14,7 @@ void kent_span_fill(const kent_model *m, kent_span *span)
     span->length = m->chainage[last] - m->chainage[span->route_first];
     span->bore = pipe->inside_diameter;
     span->area = PI * span->bore * span->bore / 4.0;
-    span->loss = pipe->loss * span->length / whole; /* equation 05.2 */
+    span->loss = pipe->loss * span->length / whole; /* equation 5.2 */
     span->friction =
         (kent_friction){.law = pipe->friction,
                         .coefficient = pipe->friction_coefficient,
@@ -52,7 +52,7 @@ double kent_span_level(const kent_model *m, const kent_span *span, double chaina
     return start + fmin(fmax(share, 0.0), 1.0) * (end - start);
 }
 
-/* Equation 05.3. */
+/* Equation 5.3. */
 double kent_span_loss(const kent_model *m, const kent_span *span, double flow,
                       double *derivative)
 {

@@ -112,7 +112,7 @@ static void derive_angle(const kent_sheet *s, size_t i, size_t j, const char *sa
 
     (void)snprintf(formula, sizeof formula, "%s(n%dx*n%dx+n%dy*n%dy+n%dz*n%dz)",
                    bend ? "-" : "", a, b, a, b, a, b);
-    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "05.4" : "05.7",
+    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "5.4" : "5.7",
                          "cosine of the angle, by the two directions");
     kent_derivation_put(d, "angle", angle, KENT_ANGLE, KENT_COMPUTED, says);
     kent_derivation_work(d, "c'", cos(angle), KENT_RATIO, "cos(angle)", "",
@@ -239,14 +239,14 @@ static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c, i
     char formula[64];
     if (c->scenario < 0 && c->kind == KENT_CASE_TEST) {
         kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE,
-                             "pg+rho*g*(zg-z)", "09.1", "test pressure, by elevation");
+                             "pg+rho*g*(zg-z)", "9.1", "test pressure, by elevation");
         return;
     }
     kent_derivation_put(d, symbol("H%d", n).text, head, KENT_LENGTH, KENT_COMPUTED,
                         head_words(m, c));
     (void)snprintf(formula, sizeof formula, "rho*g*(H%d-z)", n);
     kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE, formula,
-                         is_static(c) ? "09.2" : "09.3", "pressure at the centre");
+                         is_static(c) ? "9.2" : "9.3", "pressure at the centre");
 }
 
 /* Each case of a fitting in a network by arithmetic: pressure, thrust, factored. */

@@ -187,11 +187,13 @@ bool kent_table_print(const kent_table *t, size_t limit, kent_text *out)
         }
         end_line(&line, out);
     }
+    size_t c = 0;
     for (size_t i = 0; i < t->cell_count; i++) {
-        const size_t c = i % t->column_count;
         if (c > 0) add_blanks(&line, gap);
         add_cell(&line, t->cells[i], width[c], t->columns[c].align);
-        if (c + 1 == t->column_count) end_line(&line, out);
+        if (++c < t->column_count) continue;
+        end_line(&line, out);
+        c = 0;
     }
 done:
     kent_text_clear(&line);

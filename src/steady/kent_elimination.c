@@ -66,7 +66,7 @@ static size_t count_terms(const kent_equations *eq)
     return count;
 }
 
-/* dQ = (dHa - dHb - b) / slope put into every row that knows Q. (06.12) */
+/* dQ = (dHa - dHb - b) / slope put into every row that knows Q. (6.12) */
 static void list_terms(kent_elimination *el)
 {
     const kent_equations *eq = el->eq;
@@ -175,7 +175,7 @@ kent_status kent_elimination_factor(kent_elimination *el, const double *value)
     return el->common.status == KLU_OUT_OF_MEMORY ? KENT_E_NOMEM : KENT_E_SOLVE;
 }
 
-/* Right-hand side of a kept row: b + sum A_k b_span / slope. (06.12) */
+/* Right-hand side of a kept row: b + sum A_k b_span / slope. (6.12) */
 static double right_side(const kent_elimination *el, const double *b, size_t i)
 {
     const kent_equations *eq = el->eq;
@@ -200,7 +200,7 @@ kent_status kent_elimination_solve(kent_elimination *el, const double *b, double
                    &el->common)) {
         return KENT_E_SOLVE;
     }
-    for (size_t e = 0; e < eq->spans; e++) { /* (06.13) */
+    for (size_t e = 0; e < eq->spans; e++) { /* (6.13) */
         const int *node = eq->model->spans[e].node;
         const size_t i = eq->nodes + e;
         x[i] = (el->right[node[0]] - el->right[node[1]] - b[i]) / el->slope[e];

@@ -1,5 +1,5 @@
 /* Linear systems of a Newton step: span flows are eliminated one by one, what is left
- * (heads and link flows) is factored by KLU. (06.11) .. (06.13) */
+ * (heads and link flows) is factored by KLU. (6.11) .. (6.13) */
 #ifndef KENT_ELIMINATION_INTERNAL_H
 #define KENT_ELIMINATION_INTERNAL_H
 

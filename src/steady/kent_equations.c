@@ -26,7 +26,7 @@ void kent_equations_free(kent_equations *eq)
     free(eq);
 }
 
-/* dh/dQ of laminar flow, 128 nu L / (pi g D^4), s/m2. (06.4) */
+/* dh/dQ of laminar flow, 128 nu L / (pi g D^4), s/m2. (6.4) */
 static double laminar_slope(const kent_span *span)
 {
     const kent_friction *f = &span->friction;
@@ -52,7 +52,7 @@ static kent_link valve_link(const kent_valve *v)
 }
 
 /* A dependent outflow between none and all is an orifice at the level of its point,
- * since p/full = (q/Q)^2. (06.8) */
+ * since p/full = (q/Q)^2. (6.8) */
 static kent_link outflow_link(const kent_model *m, const kent_outflow *o)
 {
     kent_link link = {.law = KENT_LINK_FLOW,
@@ -78,7 +78,7 @@ static void fill_links(kent_equations *eq)
     }
 }
 
-/* Loss of the flow out of a fixed level, on the area of its largest span. (06.5) */
+/* Loss of the flow out of a fixed level, on the area of its largest span. (6.5) */
 static void fill_levels(kent_equations *eq)
 {
     const kent_model *m = eq->model;
@@ -247,10 +247,10 @@ static double node_residual(const kent_equations *eq, const double *x, size_t n)
 {
     const double in = inflow(eq, x, n);
     const int level = eq->fixed_level[n];
-    if (level < 0) return in; /* (06.1) */
+    if (level < 0) return in; /* (6.1) */
     const double out = fmax(-in, 0.0);
     return x[n] - eq->model->fixed_levels[level].level +
-           eq->entry[n] * out * out; /* (06.5) */
+           eq->entry[n] * out * out; /* (6.5) */
 }
 
 /* h: heads, q: the link's flow. */
@@ -278,7 +278,7 @@ void kent_equations_residual(const kent_equations *eq, const double *x, double *
     for (size_t n = 0; n < eq->nodes; n++) {
         f[n] = node_residual(eq, x, n);
     }
-    for (size_t e = 0; e < eq->spans; e++) { /* (06.2) */
+    for (size_t e = 0; e < eq->spans; e++) { /* (6.2) */
         const kent_span *span = &eq->model->spans[e];
         f[eq->nodes + e] = x[span->node[0]] - x[span->node[1]] -
                            kent_span_loss(eq->model, span, q[e], &slope);

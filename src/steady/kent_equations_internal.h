@@ -13,9 +13,9 @@
 #include <stdint.h>
 
 typedef enum kent_link_law {
-    KENT_LINK_FLOW, /* passes a given flow                 (06.7) */
-    KENT_LINK_HEAD, /* holds a head before it, passes what that takes (06.9) */
-    KENT_LINK_LOSS  /* loses resistance q|q|               (06.6) */
+    KENT_LINK_FLOW, /* passes a given flow                 (6.7) */
+    KENT_LINK_HEAD, /* holds a head before it, passes what that takes (6.9) */
+    KENT_LINK_LOSS  /* loses resistance q|q|               (6.6) */
 } kent_link_law;
 
 typedef struct kent_link {

@@ -1,5 +1,5 @@
 /* Which law each outflow obeys: it draws all, part or none of its flow as the pressure
- * there allows. (06.8), (06.9) */
+ * there allows. (6.8), (6.9) */
 #ifndef KENT_OUTLET_INTERNAL_H
 #define KENT_OUTLET_INTERNAL_H
 

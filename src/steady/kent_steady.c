@@ -239,7 +239,7 @@ done:
 /* ---- the result --------------------------------------------------------------------
  */
 
-/* Capacity at full opening that passes the given flow between the heads found. (06.10)
+/* Capacity at full opening that passes the given flow between the heads found. (6.10)
  */
 static kent_status find_capacity(const kent_model *m, const kent_valve *v,
                                  const double *head, double *capacity, kent_error *err)

@@ -8,7 +8,7 @@
 /* R|Q|/(2B) in the steady state from which a span is swept implicitly: half of what
  * the explicit sweep bears, so that flow may double before a run has to stop. */
 static const double IMPLICIT_FROM = 0.125;
-/* R|Q|/B beyond which even the implicit sweep cannot hold the steady state: 07.11. */
+/* R|Q|/B beyond which even the implicit sweep cannot hold the steady state: 7.11. */
 static const double IMPLICIT_MOST = 0.9;
 /* m/s, of a span at rest. */
 static const double SPEED_AT_REST = 1.0;
@@ -95,7 +95,7 @@ static void describe_span(const kent_model *m, const kent_grid *grid, size_t i,
     const kent_span *span = &m->spans[i];
     const double n = grid->reaches[i];
     const double b = grid->wave_speed_used[i] / (m->gravity * span->area);
-    const double per_head = /* R = (f dx/D + K/N) per_head x 4B^2: 07.5, 07.7 */
+    const double per_head = /* R = (f dx/D + K/N) per_head x 4B^2: 7.5, 7.7 */
         1.0 / (2.0 * m->gravity * span->area * span->area * 4.0 * b * b);
     const bool none = m->solver.friction == KENT_SURGE_NONE;
 

@@ -10,10 +10,10 @@ enum { KENT_DRAG_OCTAVE = 16, KENT_DRAG_BINS = 30 * KENT_DRAG_OCTAVE };
 
 typedef struct kent_drag_span {
     const kent_friction *friction; /* the model's */
-    double per_factor;             /* k of a Darcy factor of 1, 1/m: 07.7 */
+    double per_factor;             /* k of a Darcy factor of 1, 1/m: 7.7 */
     double fixed;                  /* k of spread minor losses, 1/m */
-    double stiffening;             /* 1 where explicit; 07.11 */
-    double speed_per_metre;        /* 1/s: |V| = |p - m| x this, 07.6 */
+    double stiffening;             /* 1 where explicit; 7.11 */
+    double speed_per_metre;        /* 1/s: |V| = |p - m| x this, 7.6 */
     double slowest;                /* m/s, of Reynolds number 1: slower counts as it */
     double *factor; /* [KENT_DRAG_BINS + 1] at the bins' edges; 0: not asked for yet */
 } kent_drag_span;

@@ -10,7 +10,7 @@ double kent_level_head(const kent_level *level, double c, double y)
 {
     const double rise = level->level - c;
     if (rise <= 0.0) return level->level; /* inflow into it loses nothing */
-    /* 07.15: loss Q^2 + Q/Y = level - C */
+    /* 7.15: loss Q^2 + Q/Y = level - C */
     const double flow =
         2.0 * rise / (1.0 / y + sqrt(1.0 / (y * y) + 4.0 * level->loss * rise));
     return c + flow / y;
@@ -23,7 +23,7 @@ double kent_draw_head(const kent_draw *draw, double c, double y)
     if (whole >= draw->z + draw->full) return whole;
     if (c <= draw->z) return c;            /* no pressure: nothing is drawn */
     if (draw->full <= 0.0) return draw->z; /* draws what keeps the pressure at nil */
-    /* 07.17: h + b sqrt(h) = C - z, b = flow/(Y sqrt(full)) */
+    /* 7.17: h + b sqrt(h) = C - z, b = flow/(Y sqrt(full)) */
     const double b = draw->flow / (y * sqrt(draw->full)), rise = c - draw->z;
     const double root = 2.0 * rise / (b + sqrt(b * b + 4.0 * rise));
     return draw->z + root * root;
@@ -33,7 +33,7 @@ double kent_gate_flow(double capacity, double c, double inverse_y)
 {
     const double drop = fabs(c);
     if (!(capacity > 0.0) || drop == 0.0) return 0.0;
-    /* 07.18: Q|Q|/E^2 + Q sum 1/Y = difference of C, times E^2 so that E may be nil */
+    /* 7.18: Q|Q|/E^2 + Q sum 1/Y = difference of C, times E^2 so that E may be nil */
     const double ze = inverse_y * capacity;
     return copysign(2.0 * drop * capacity / (ze + sqrt(ze * ze + 4.0 * drop)), c);
 }

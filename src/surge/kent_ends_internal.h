@@ -1,7 +1,7 @@
 /* Where spans end: from the waves that arrive at a node to the waves that leave it.
  *
  * Seen from a node every span looks alike: with c the wave arriving from it, the flow
- * into the node is (c - H)/B, and the wave sent back is 2H - c (07.12, 07.13). Summed
+ * into the node is (c - H)/B, and the wave sent back is 2H - c (7.12, 7.13). Summed
  * over a node's tips, with Y = sum 1/B: inflow = Y (C - H), C = sum (1/B) c / Y. So an
  * end needs one number, H, from C, Y and what stands there.
  *

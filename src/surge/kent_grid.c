@@ -29,7 +29,7 @@ static double nearest_reaches(double travel, double step)
 }
 
 /* The largest step up to `step` at which some whole number of reaches moves the span's
- * wave speed by no more than the tolerance: 07.22. */
+ * wave speed by no more than the tolerance: 7.22. */
 static double feasible_step(double travel, double step, double tolerance)
 {
     const double reaches = ceil(travel / (step * (1.0 + tolerance)) * (1.0 - ROUNDING));

@@ -1,12 +1,12 @@
 /* The sweep: what one step does to every node of every span.
  *
  * Stored are the two characteristics that arrive at a node at the present instant,
- * both in metres (docs/theory 07.6):
+ * both in metres (docs/theory 7.6):
  *
  *     p = H + B Q   from the left,      m = H - B Q   from the right.
  *
  * So H = (p + m)/2 and d = p - m = 2 B Q. What leaves the node again has lost the
- * friction of the reach ahead, R Q|Q| = k d|d| with k = R/(4 B^2) (07.7):
+ * friction of the reach ahead, R Q|Q| = k d|d| with k = R/(4 B^2) (7.7):
  *
  *     f = k d|d|,    p <- p - f  goes right,    m <- m + f  goes left.
  *
@@ -16,7 +16,7 @@
  * last m of a span are written by its ends (kent_ends_internal.h) before the sweep.
  *
  * Explicit: stable while k|d| = R|Q|/(2B) stays below `limit`; a node beyond is left
- * as it is, so that it can be found, and counted. Point-implicit (07.10):
+ * as it is, so that it can be found, and counted. Point-implicit (7.10):
  * f = k d|d|/(1 + 2 k|d|), stable whatever d; limit DBL_MAX then counts NaN alone.
  *
  * The envelopes keep p + m, twice the head: halving is exact and is left to whoever

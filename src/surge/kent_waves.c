@@ -75,7 +75,7 @@ kent_status kent_waves_new(const kent_model *m, const kent_grid *grid,
     for (size_t s = 0; s < spans; s++) {
         w->reaches[s] = (size_t)grid->reaches[s];
         w->impedance[s] =
-            grid->wave_speed_used[s] / (m->gravity * m->spans[s].area); /* 07.4 */
+            grid->wave_speed_used[s] / (m->gravity * m->spans[s].area); /* 7.4 */
     }
     place_spans(w, implicit);
     *out = w;
@@ -110,7 +110,7 @@ void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flo
     }
 }
 
-/* 07.8: the node to the right receives p, the node to the left m. */
+/* 7.8: the node to the right receives p, the node to the left m. */
 static void move_on(kent_waves *w)
 {
     const size_t bytes = w->node_total * sizeof *w->p;

@@ -16,7 +16,7 @@ typedef struct kent_waves {
     size_t *first;      /* [span_count] a span's first node */
     size_t *reaches;    /* [span_count] */
     double *impedance;  /* [span_count] B = a/(g A), s/m2 */
-    double *k;          /* [node_total] 1/m, friction: 07.7 */
+    double *k;          /* [node_total] 1/m, friction: 7.7 */
     double *twice_highest, *twice_lowest; /* [node_total] m */
     double *p, *m;                        /* [node_total] m, inside their stores */
     double *p_store, *m_store;            /* [node_total + slack] */
@@ -24,7 +24,7 @@ typedef struct kent_waves {
     size_t slack;
 } kent_waves;
 
-/* Largest R|Q|/(2B) of an explicit reach, beyond which friction overshoots (07.9). */
+/* Largest R|Q|/(2B) of an explicit reach, beyond which friction overshoots (7.9). */
 extern const double KENT_EXPLICIT_LIMIT;
 
 /* implicit: [span_count] which spans are swept point-implicitly. */

@@ -36,7 +36,7 @@ void kent_balance_sum(const kent_port *ports, size_t count, double density,
                       kent_balance *b);
 
 /* Momentum factor of a port's stream at a flow (m3/s, either sign): the port's own
- * where given, else by profile (docs/theory 08.6) with the friction of its pipe; of a
+ * where given, else by profile (docs/theory 8.6) with the friction of its pipe; of a
  * smooth pipe where the port belongs to none. */
 double kent_port_momentum_factor(const kent_model *m, const kent_port *port,
                                  double flow);

@@ -49,7 +49,7 @@ static void case_name(kent_load_case *c, const char *name)
     (void)snprintf(c->name, sizeof c->name, "%s", name);
 }
 
-/* Pa under the field test, by elevation from where the gauge is read (09.1). */
+/* Pa under the field test, by elevation from where the gauge is read (9.1). */
 static double fitting_test_pressure(const kent_model *m, const kent_fitting *f)
 {
     const int gauge = m->loads.test_gauge;
@@ -58,7 +58,7 @@ static double fitting_test_pressure(const kent_model *m, const kent_fitting *f)
     return m->loads.test_pressure + m->water.density * m->gravity * (level - f->at.z);
 }
 
-/* Pa without flow under the highest connected level, or the one stated (09.2). */
+/* Pa without flow under the highest connected level, or the one stated (9.2). */
 static double fitting_static_pressure(const kent_model *m, const kent_fitting *f)
 {
     const kent_port *port = &m->ports[f->port_first];
@@ -136,7 +136,7 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
     c->above_90_percent = kent_seen_above_90_percent(seen, slot->step);
 }
 
-/* A valve shut with the most that can press on one side and nothing behind (09.4). */
+/* A valve shut with the most that can press on one side and nothing behind (9.4). */
 static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side,
                              kent_fitting_loads *loads)
 {

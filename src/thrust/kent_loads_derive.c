@@ -99,7 +99,7 @@ static void sheet_pressure(const sheet *s, const char *symbol, double pressure)
                             c->scenario >= 0 ? "head at that instant of the surge"
                                              : "head of the steady state");
         kent_derivation_work(s->d, symbol, pressure, KENT_PRESSURE, "rho*g*(H-z)",
-                             "09.3", "pressure at the fitting's centre");
+                             "9.3", "pressure at the fitting's centre");
     } else if (c->kind == KENT_CASE_TEST) {
         const int gauge = m->loads.test_gauge;
         kent_derivation_put(s->d, "p_test", m->loads.test_pressure, KENT_PRESSURE,
@@ -108,7 +108,7 @@ static void sheet_pressure(const sheet *s, const char *symbol, double pressure)
             s->d, "z_gauge", gauge >= 0 ? m->points[gauge].at.z : s->fitting->at.z,
             KENT_LENGTH, gauge >= 0 ? KENT_GIVEN : KENT_ASSUMED, "level of the gauge");
         kent_derivation_work(s->d, symbol, pressure, KENT_PRESSURE,
-                             "p_test+rho*g*(z_gauge-z)", "09.1",
+                             "p_test+rho*g*(z_gauge-z)", "9.1",
                              "test pressure at the fitting's centre");
     } else {
         kent_derivation_put(
@@ -116,7 +116,7 @@ static void sheet_pressure(const sheet *s, const char *symbol, double pressure)
             isnan(m->loads.static_level) ? "highest level connected, every valve open"
                                          : "static level stated");
         kent_derivation_work(s->d, symbol, pressure, KENT_PRESSURE, "rho*g*(level-z)",
-                             "09.2", "static pressure at the fitting's centre");
+                             "9.2", "static pressure at the fitting's centre");
     }
 }
 
@@ -146,7 +146,7 @@ static void sheet_geometry(const sheet *s, size_t i)
     sheet_put(s, say("D_%zu", n), port->seal_diameter, KENT_DIAMETER,
               catalogued ? KENT_CATALOGUE : KENT_GIVEN,
               "diameter that the pressure acts on, at the first joint that slips");
-    sheet_work(s, say("A_%zu", n), area, KENT_AREA, say("pi/4*D_%zu^2", n), "08.2",
+    sheet_work(s, say("A_%zu", n), area, KENT_AREA, say("pi/4*D_%zu^2", n), "8.2",
                "area that the pressure acts on");
 }
 
@@ -164,15 +164,15 @@ static void sheet_stream(const sheet *s, size_t i)
     }
     sheet_put(s, say("d_%zu", n), port->inside_diameter, KENT_DIAMETER, KENT_GIVEN,
               "bore of the stream");
-    sheet_work(s, say("a_%zu", n), bore, KENT_AREA, say("pi/4*d_%zu^2", n), "08.2",
+    sheet_work(s, say("a_%zu", n), bore, KENT_AREA, say("pi/4*d_%zu^2", n), "8.2",
                "area of the stream");
     sheet_put(s, say("Q_%zu", n), state->flow, KENT_FLOW,
               s->load->given ? KENT_GIVEN : KENT_COMPUTED, "flow out of the fitting");
     sheet_work(s, say("V_%zu", n), state->flow / bore, KENT_SPEED,
-               say("Q_%zu/a_%zu", n, n), "08.3", "velocity out of the fitting");
+               say("Q_%zu/a_%zu", n, n), "8.3", "velocity out of the fitting");
     sheet_put(s, say("beta_%zu", n), state->momentum_factor, KENT_RATIO,
               isnan(port->momentum_factor) ? KENT_COMPUTED : KENT_GIVEN,
-              "momentum factor of the velocity profile (08.6)");
+              "momentum factor of the velocity profile (8.6)");
 }
 
 static void sheet_port_pressure(const sheet *s, size_t i)
@@ -193,11 +193,11 @@ static void sheet_port_pressure(const sheet *s, size_t i)
     } else if (s->fitting->type == KENT_VALVE) {
         sheet_pressure(s, symbol.s, pressure);
     } else if (!s->moving || i == s->widest) {
-        sheet_work(s, symbol, pressure, KENT_PRESSURE, say("p"), "08.3",
+        sheet_work(s, symbol, pressure, KENT_PRESSURE, say("p"), "8.3",
                    "gauge pressure at the port");
     } else {
         sheet_work(s, symbol, pressure, KENT_PRESSURE,
-                   say("p+rho/2*(V_%zu^2-V_%zu^2)", w, n), "08.3",
+                   say("p+rho/2*(V_%zu^2-V_%zu^2)", w, n), "8.3",
                    "gauge pressure at the port");
     }
 }
@@ -209,17 +209,17 @@ static void sheet_push(const sheet *s, size_t i)
 
     sheet_port_pressure(s, i);
     sheet_work(s, say("P_%zu", n), state->pressure_force, KENT_FORCE,
-               say("p_%zu*A_%zu", n, n), "08.4", "pressure force");
+               say("p_%zu*A_%zu", n, n), "8.4", "pressure force");
     if (s->moving) {
         sheet_work(s, say("J_%zu", n), state->momentum_flux, KENT_FORCE,
-                   say("beta_%zu*rho*Q_%zu*V_%zu", n, n, n), "08.5",
+                   say("beta_%zu*rho*Q_%zu*V_%zu", n, n, n), "8.5",
                    "momentum flux, the same for flow either way");
     } else {
         sheet_put(s, say("J_%zu", n), 0.0, KENT_FORCE, KENT_COMPUTED,
                   "momentum flux: no stream");
     }
     sheet_work(s, say("F_%zu", n), state->push, KENT_FORCE, say("P_%zu+J_%zu", n, n),
-               "08.1", "push, against the outward direction");
+               "8.1", "push, against the outward direction");
 }
 
 /* ---- sum ----------------------------------------------------------------------------
@@ -245,7 +245,7 @@ static void sheet_unsteady(const sheet *s)
         sheet_put(s, say("r_%zu", n), port->face, KENT_LENGTH, KENT_GIVEN,
                   "from the centre to the port");
         sheet_put(s, say("w_%zu", n), b->port[i].flow_rate / bore, KENT_ACCELERATION,
-                  KENT_COMPUTED, "dV/dt of the stream (08.7)");
+                  KENT_COMPUTED, "dV/dt of the stream (8.7)");
     }
     for (const char *axis = "xyz"; *axis != '\0'; axis++) {
         const words symbol = say("U_%c", *axis);
@@ -264,8 +264,8 @@ static void sheet_unsteady(const sheet *s)
         }
         const words close = say(")");
         words_add(&formula, &close);
-        sheet_work(s, symbol, component(b->unsteady, *axis), KENT_FORCE, formula,
-                   "08.7", "force of the changing flow, never what governs");
+        sheet_work(s, symbol, component(b->unsteady, *axis), KENT_FORCE, formula, "8.7",
+                   "force of the changing flow, never what governs");
     }
 }
 
@@ -293,13 +293,13 @@ static void sheet_sum(const sheet *s)
         }
         const words close = say(")+W_%c+U_%c", axis, axis);
         words_add(&formula, &close);
-        sheet_work(s, say("T_%c", axis), component(t, axis), KENT_FORCE, formula,
-                   "08.1", TOWARDS[k]);
+        sheet_work(s, say("T_%c", axis), component(t, axis), KENT_FORCE, formula, "8.1",
+                   TOWARDS[k]);
     }
     kent_derivation_work(s->d, "T_h", kent_thrust_horizontal(t), KENT_FORCE,
-                         "sqrt(T_x^2+T_y^2)", "08.8", "sideways thrust");
+                         "sqrt(T_x^2+T_y^2)", "8.8", "sideways thrust");
     kent_derivation_work(s->d, "T", kent_vec3_length(t), KENT_FORCE,
-                         "sqrt(T_x^2+T_y^2+T_z^2)", "08.8", "resultant thrust");
+                         "sqrt(T_x^2+T_y^2+T_z^2)", "8.8", "resultant thrust");
 }
 
 /* ---- check line, by type ------------------------------------------------------------
@@ -329,11 +329,11 @@ static void check_bend(const sheet *s)
                         "turn of the bend in space");
     if (s->moving) {
         kent_derivation_work(s->d, "C", 2.0 * p[0].push * half, KENT_FORCE,
-                             "2*F_1*sin(theta/2)", "08.9",
+                             "2*F_1*sin(theta/2)", "8.9",
                              "check: the resultant, without weight");
     } else {
         kent_derivation_work(s->d, "C", 2.0 * p[0].pressure_force * half, KENT_FORCE,
-                             "2*p_1*A_1*sin(theta/2)", "08.9",
+                             "2*p_1*A_1*sin(theta/2)", "8.9",
                              "check: the resultant, without weight");
     }
 }
@@ -348,7 +348,7 @@ static void check_branch(const sheet *s)
         return;
     }
     kent_derivation_work(s->d, "C", s->instant->balance.port[2].pressure_force,
-                         KENT_FORCE, "p_3*A_3", "08.10",
+                         KENT_FORCE, "p_3*A_3", "8.10",
                          s->moving
                              ? "check: the branch's pressure alone, away from it; "
                                "the streams add the rest"
@@ -366,14 +366,14 @@ static void check_reducer(const sheet *s)
     }
     if (s->moving) {
         kent_derivation_work(s->d, "C", fabs(p[0].push - p[1].push), KENT_FORCE,
-                             "abs(F_1-F_2)", "08.11",
+                             "abs(F_1-F_2)", "8.11",
                              "check: the resultant, along the axis");
     } else {
         const double first = s->ports[0].seal_diameter,
                      second = s->ports[1].seal_diameter;
         const double areas = 0.25 * PI * fabs(first * first - second * second);
         kent_derivation_work(s->d, "C", p[0].pressure * areas, KENT_FORCE,
-                             "p_1*abs(A_1-A_2)", "08.11",
+                             "p_1*abs(A_1-A_2)", "8.11",
                              "check: the resultant, towards the small end");
     }
 }
@@ -383,7 +383,7 @@ static void check_end(const sheet *s)
     const kent_port_state *p = s->instant->balance.port;
 
     kent_derivation_work(s->d, "C", p[0].push, KENT_FORCE,
-                         s->moving ? "p_1*A_1+J_1" : "p_1*A_1", "08.12",
+                         s->moving ? "p_1*A_1+J_1" : "p_1*A_1", "8.12",
                          "check: the resultant, away from the pipe");
 }
 
@@ -394,13 +394,13 @@ static void check_valve(const sheet *s)
     if (s->load->closed) {
         const size_t n = s->load->pressed + 1;
         sheet_work(s, say("C"), p[s->load->pressed].pressure_force, KENT_FORCE,
-                   say("p_%zu*A_%zu", n, n), "09.4",
+                   say("p_%zu*A_%zu", n, n), "9.4",
                    "check: the resultant, away from the pressed side");
     } else if (s->count == 2 && !in_line(&s->ports[0], &s->ports[1])) {
         sheet_heading(s, say("Check: no short form, the axis turns"));
     } else if (s->count == 2) {
         kent_derivation_work(s->d, "C", fabs(p[0].push - p[1].push), KENT_FORCE,
-                             "abs(F_1-F_2)", "08.11",
+                             "abs(F_1-F_2)", "8.11",
                              "check: the resultant, along the axis");
     } else {
         sheet_heading(s, say("The jet behind the valve is left out: it would lessen "

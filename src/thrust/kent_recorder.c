@@ -9,7 +9,7 @@
 static const double PI = 3.14159265358979323846;
 
 /* m/s: beta of the search is taken at the steady flow, but at no slower one than this:
- * 08.6 says why that cannot change what prints. */
+ * 8.6 says why that cannot change what prints. */
 static const double USUAL_SPEED = 1.0;
 
 /* ---- what to watch ------------------------------------------------------------------
@@ -66,7 +66,7 @@ static double fitting_crossing(const kent_model *m, const kent_fitting *f)
 }
 
 /* Coefficients of one port's push: F = per_head H + own Q^2 + widest Q_ref^2 +
- * constant, from 08.1 with the pressure of 08.3; Q^2 is the same for flow either way.
+ * constant, from 8.1 with the pressure of 8.3; Q^2 is the same for flow either way.
  */
 static int sensor_add_port(kent_recorder *r, const kent_fitting *f, size_t i,
                            kent_sensor *sensor)
@@ -272,7 +272,7 @@ static void seen_keep(const kent_recorder *r, const kent_slot *slot,
         const double before =
             sign * slot_flow_before(slot, trace, r->watch_count, watch, n, lag);
         frame->flow_rate[i] =
-            (frame->flow[i] - before) / ((double)lag * slot->step); /* 08.7 */
+            (frame->flow[i] - before) / ((double)lag * slot->step); /* 8.7 */
     }
 }
 
@@ -284,7 +284,7 @@ typedef struct kent_thrusts {
     double x[CHUNK], y[CHUNK], z[CHUNK]; /* N */
 } kent_thrusts;
 
-/* 09.6 for `count` instants from row `first` of the trace. */
+/* 9.6 for `count` instants from row `first` of the trace. */
 static void sensor_thrusts(const kent_recorder *r, const kent_sensor *sensor,
                            const kent_trace *trace, size_t first, size_t count,
                            kent_thrusts *out)

@@ -69,7 +69,7 @@ double kent_seen_above_90_percent(const kent_seen *seen, double step);
 /* Whether the fitting stands in the network, not on given ports. */
 bool kent_fitting_in_network(const kent_fitting *f);
 
-/* The balance of an instant in the network: pressures from heads by 08.3 and 09.3. Each
+/* The balance of an instant in the network: pressures from heads by 8.3 and 9.3. Each
  * side of a valve keeps the pressure of its own head. */
 kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
                                    const kent_frame *frame);

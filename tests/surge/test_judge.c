@@ -63,7 +63,7 @@ static void a_looped_network_agrees_with_the_textbook_program(void **state)
 }
 
 /* Quasi-steady friction is worked out where the flow has moved by 1/32, not at every
- * node and step. What that costs, against a program that does: 07.14 states the figure
+ * node and step. What that costs, against a program that does: 7.14 states the figure
  * asserted here. */
 static void friction_worked_out_seldom_costs_a_ten_thousandth_of_the_swing(void **state)
 {

@@ -194,7 +194,7 @@ static void kernels_and_block_sizes_give_the_same_bits(void **state)
 }
 
 /* Water held in a span by its elasticity, m3 over that at head nil: dt/B times the mean
- * of the two waves in each reach (07.20). Frictionless. */
+ * of the two waves in each reach (7.20). Frictionless. */
 static double held(const march *m, int span)
 {
     const size_t n = (size_t)m->grid->reaches[span];
@@ -318,7 +318,7 @@ static void between_grid_points_both_neighbours_count(void **state)
 }
 
 /* Of a lumped reach, whatever wave speed it got: over a step, the mean difference of
- * head is L/(g A) times the change of mean flow over the step's time (07.21). */
+ * head is L/(g A) times the change of mean flow over the step's time (7.21). */
 static void a_short_span_keeps_its_inertia(void **state)
 {
     (void)state;
