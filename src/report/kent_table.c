@@ -88,10 +88,10 @@ static size_t *widths_of(const kent_table *t)
         const size_t unit = kent_text_columns(t->columns[c].unit);
         width[c] = head > unit ? head : unit;
     }
-    for (size_t i = 0; i < t->cell_count; i++) {
+    for (size_t i = 0, c = 0; i < t->cell_count; i++) {
         const size_t columns = kent_text_columns(t->cells[i]);
-        size_t *w = &width[i % t->column_count];
-        if (columns > *w) *w = columns;
+        if (columns > width[c]) width[c] = columns;
+        c = c + 1 < t->column_count ? c + 1 : 0;
     }
     return width;
 }
