@@ -5,7 +5,7 @@ head of one scenario against chainage, with the points that have fittings. Stand
 only. The picture of the README is made with it:
 
     build/kentledge run cases/design/brackenmoss/brackenmoss.cfg --out demo-results
-    /usr/bin/python3 docs/picture/draw_profile.py demo-results shut-12s A,B docs/picture/profile.svg
+    /usr/bin/python3 docs/picture/draw_profile.py demo-results shut-16s A,B docs/picture/profile.svg
 """
 import csv
 import json
