@@ -84,9 +84,14 @@ kent_instant kent_instant_given(const kent_model *m, const kent_fitting *f)
     return out;
 }
 
+kent_vec3 kent_instant_lasting(const kent_instant *i)
+{
+    return kent_vec3_sub(i->balance.thrust, i->balance.unsteady);
+}
+
 bool kent_instant_has_sense(const kent_instant *i, kent_sense sense)
 {
-    const kent_vec3 t = kent_vec3_sub(i->balance.thrust, i->balance.unsteady);
+    const kent_vec3 t = kent_instant_lasting(i);
     double sizes = kent_vec3_length(i->balance.weight);
 
     for (size_t k = 0; k < i->balance.port_count; k++) {

@@ -75,6 +75,9 @@ kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out
                                  kent_error *err);
 void kent_loads_free(kent_loads_result *l);
 
+/* N: the thrust without the force of the changing flow (8.7), which never governs. */
+kent_vec3 kent_instant_lasting(const kent_instant *i);
+
 /* The horizontal size of a thrust, and its azimuth (rad, clockwise from north, 0 .. 2
  * pi). */
 double kent_thrust_horizontal(kent_vec3 thrust);

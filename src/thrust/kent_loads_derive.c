@@ -123,14 +123,20 @@ static void sheet_pressure(const sheet *s, const char *symbol, double pressure)
 /* ---- ports --------------------------------------------------------------------------
  */
 
+/* Whether the sizes of a port are those of a pipe class. */
+static bool port_catalogued(const sheet *s, const kent_port *port)
+{
+    const kent_model *m = s->model;
+    return port->span >= 0 && m->pipes[m->spans[port->span].pipe].pipe_class[0] != '\0';
+}
+
 static void sheet_geometry(const sheet *s, size_t i)
 {
     const kent_port *port = &s->ports[i];
     const size_t n = i + 1;
     const double area = 0.25 * PI * port->seal_diameter * port->seal_diameter;
     const kent_model *m = s->model;
-    const bool catalogued =
-        port->span >= 0 && m->pipes[m->spans[port->span].pipe].pipe_class[0] != '\0';
+    const bool catalogued = port_catalogued(s, port);
 
     if (port->toward >= 0) {
         sheet_heading(s, say("Port %zu, towards %s", n, m->points[port->toward].id));
@@ -145,7 +151,9 @@ static void sheet_geometry(const sheet *s, size_t i)
               "outward direction, up");
     sheet_put(s, say("D_%zu", n), port->seal_diameter, KENT_DIAMETER,
               catalogued ? KENT_CATALOGUE : KENT_GIVEN,
-              "diameter that the pressure acts on, at the first joint that slips");
+              port->seal_diameter > port->inside_diameter
+                  ? "outside diameter: the pressure acts on it where a joint slips"
+                  : "diameter that the pressure acts on");
     sheet_work(s, say("A_%zu", n), area, KENT_AREA, say("pi/4*D_%zu^2", n), "8.2",
                "area that the pressure acts on");
 }
@@ -159,10 +167,11 @@ static void sheet_stream(const sheet *s, size_t i)
 
     if (!s->moving) {
         sheet_put(s, say("Q_%zu", n), 0.0, KENT_FLOW,
-                  s->load->given ? KENT_GIVEN : KENT_ASSUMED, "no flow");
+                  s->load->given ? KENT_GIVEN : KENT_COMPUTED, "no flow");
         return;
     }
-    sheet_put(s, say("d_%zu", n), port->inside_diameter, KENT_DIAMETER, KENT_GIVEN,
+    sheet_put(s, say("d_%zu", n), port->inside_diameter, KENT_DIAMETER,
+              port_catalogued(s, port) ? KENT_CATALOGUE : KENT_GIVEN,
               "bore of the stream");
     sheet_work(s, say("a_%zu", n), bore, KENT_AREA, say("pi/4*d_%zu^2", n), "8.2",
                "area of the stream");
@@ -277,11 +286,15 @@ static void sheet_sum(const sheet *s)
                                           "the same, north", "the same, up"};
 
     sheet_heading(s, say("Sum"));
-    for (const char *axis = "xyz"; *axis != '\0'; axis++) {
-        sheet_put(s, say("W_%c", *axis), component(b->weight, *axis), KENT_FORCE,
-                  s->fitting->weight > 0.0 ? KENT_GIVEN : KENT_ASSUMED,
-                  s->fitting->weight > 0.0 ? "weight" : "weight: not asked for");
+    for (const char *axis = "xy"; *axis != '\0'; axis++) {
+        sheet_put(s, say("W_%c", *axis), 0.0, KENT_FORCE, KENT_COMPUTED,
+                  "weight acts downwards alone");
     }
+    sheet_put(s, say("W_z"), b->weight.z, KENT_FORCE,
+              s->fitting->weight > 0.0 ? KENT_GIVEN : KENT_ASSUMED,
+              s->fitting->weight > 0.0 ? "weight of the fitting and its water"
+                                       : "weight of the fitting and its water: left "
+                                         "out unless stated");
     sheet_unsteady(s);
     for (size_t k = 0; k < 3; k++) {
         const char axis = "xyz"[k];
@@ -479,6 +492,7 @@ void kent_loads_derive(const kent_model *m, const kent_fitting *fitting,
         sheet_geometry(&s, i);
         sheet_stream(&s, i);
     }
+    sheet_heading(&s, say(s.count > 1 ? "Push of each port" : "Push of the port"));
     for (size_t i = 0; i < s.count; i++) {
         sheet_push(&s, i);
     }
