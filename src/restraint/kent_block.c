@@ -216,10 +216,10 @@ kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
     }
     const bool carries = sideways > 0.0 && bearing_carries(rules, site, demand, out);
     if (!carries) {
-        if (up >= down) {
+        if (up < down) base_size(rules, site, demand, out);
+        /* a base that its weight makes taller than wide is a pillar */
+        if (up >= down || out->thickness > out->width) {
             gravity_size(rules, site, demand, out);
-        } else {
-            base_size(rules, site, demand, out);
         }
         out->has_face = sideways > 0.0;
         if (out->has_face) {

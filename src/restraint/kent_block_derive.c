@@ -4,12 +4,6 @@
 
 #define UP(x) "ceil((" x ")/step - " KENT_SIDE_SLACK_TEXT ")*step"
 
-static void put(kent_derivation *d, const char *symbol, double value, kent_kind kind,
-                const char *says)
-{
-    kent_derivation_put(d, symbol, value, kind, KENT_GIVEN, says);
-}
-
 static void rule(kent_derivation *d, const char *symbol, double value, kent_kind kind,
                  const char *says)
 {
@@ -43,6 +37,16 @@ static void derive_reached(const kent_holding_work *w, kent_holding *h,
                          "factor reached, with the one inside");
 }
 
+/* A pipe class has its diameter from the catalogue. */
+static kent_source diameter_source(const kent_holding_work *w)
+{
+    const kent_port *port = &w->m->ports[w->fitting->port_first];
+
+    if (port->span < 0) return KENT_GIVEN;
+    const kent_pipe *pipe = &w->m->pipes[w->m->spans[port->span].pipe];
+    return pipe->pipe_class[0] ? KENT_CATALOGUE : KENT_GIVEN;
+}
+
 /* Cover to axis to the greatest height of a face. */
 static void derive_depth(const kent_holding_work *w, kent_holding *h)
 {
@@ -50,11 +54,13 @@ static void derive_depth(const kent_holding_work *w, kent_holding *h)
     const kent_rules *r = &w->m->rules;
     const double axis = kent_site_axis(&w->site);
 
-    put(d, "OD", w->site.diameter, KENT_DIAMETER, "outside diameter of the pipe");
+    kent_derivation_put(d, "OD", w->site.diameter, KENT_DIAMETER, diameter_source(w),
+                        "outside diameter of the pipe");
     rule(d, "step", r->side_step, KENT_LENGTH, "sides come in multiples of this");
     if (isnan(axis)) return;
-    put(d, "H", w->site.cover, KENT_LENGTH, "cover, ground to crown");
-    kent_derivation_work(d, "axis", axis, KENT_LENGTH, "H + OD/2", "10.1",
+    kent_derivation_put(d, "cover", w->site.cover, KENT_LENGTH, KENT_GIVEN,
+                        "ground to crown");
+    kent_derivation_work(d, "axis", axis, KENT_LENGTH, "cover + OD/2", "10.1",
                          "depth of the pipe's axis");
 }
 

@@ -11,7 +11,7 @@ double kent_holding_part(const kent_load_case *c, kent_sense sense)
     const kent_instant *at = &c->worst[sense];
     if (!at->set) return 0.0;
 
-    const kent_vec3 t = at->balance.thrust;
+    const kent_vec3 t = kent_instant_lasting(at);
     switch (sense) {
     case KENT_SIDEWAYS:
         return kent_thrust_horizontal(t);
@@ -92,7 +92,7 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h)
                        !(greatest_unfactored(w->loads) >= KENT_HOLDING_LEAST);
     if (h->by_sense[KENT_RESULTANT] < 0) return;
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
-    w->pull = c->worst[KENT_RESULTANT].balance.thrust;
+    w->pull = kent_instant_lasting(&c->worst[KENT_RESULTANT]);
     w->pull_factor = c->safety_factor;
 }
 

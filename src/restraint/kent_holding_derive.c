@@ -5,12 +5,16 @@
 #include <string.h>
 
 static const struct sense_words {
-    const char *part, *formula, *factored, *formula_factored, *says;
+    const char *part, *formula, *lasting, *factored, *formula_factored, *says;
 } SENSES[KENT_SENSES] = {
-    [KENT_RESULTANT] = {"T", "sqrt(T_x^2+T_y^2+T_z^2)", "F", "SF*T", "whole thrust"},
-    [KENT_SIDEWAYS] = {"T_h", "sqrt(T_x^2+T_y^2)", "Fh", "SF*T_h", "sideways thrust"},
-    [KENT_UPWARD] = {"T_up", "T_z", "Fup", "SF*T_up", "upward thrust"},
-    [KENT_DOWNWARD] = {"T_dn", "-T_z", "Fdn", "SF*T_dn", "downward thrust"},
+    [KENT_RESULTANT] = {"T", "sqrt(T_x^2+T_y^2+T_z^2)",
+                        "sqrt((T_x-U_x)^2+(T_y-U_y)^2+(T_z-U_z)^2)", "F", "SF*T",
+                        "whole thrust"},
+    [KENT_SIDEWAYS] = {"T_h", "sqrt(T_x^2+T_y^2)", "sqrt((T_x-U_x)^2+(T_y-U_y)^2)",
+                       "Fh", "SF*T_h", "sideways thrust"},
+    [KENT_UPWARD] = {"T_up", "T_z", "T_z-U_z", "Fup", "SF*T_up", "upward thrust"},
+    [KENT_DOWNWARD] = {"T_dn", "-T_z", "-(T_z-U_z)", "Fdn", "SF*T_dn",
+                       "downward thrust"},
 };
 
 kent_source kent_soil_source(const kent_soil *soil)
@@ -41,15 +45,19 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     kent_derivation *d = &h->derivation;
     const struct sense_words *word = &SENSES[sense];
     const kent_load_case *c = &w->loads->cases[h->by_sense[sense]];
+    const kent_balance *b = &c->worst[sense].balance;
     const double part = kent_holding_part(c, sense);
+    const bool changing = kent_vec3_length(b->unsteady) > 0.0;
     char says[120];
 
     (void)snprintf(says, sizeof says, "Factored load: %s, case '%s'", word->says,
                    c->name);
     kent_derivation_heading(d, says);
-    if (derivation_has(d, c->worst[sense].balance.thrust)) {
-        kent_derivation_work(d, word->part, part, KENT_FORCE, word->formula, "8.8",
-                             word->says);
+    if (derivation_has(d, b->thrust)) {
+        (void)snprintf(says, sizeof says, "%s%s", word->says,
+                       changing ? ", without the force of the changing flow" : "");
+        kent_derivation_work(d, word->part, part, KENT_FORCE,
+                             changing ? word->lasting : word->formula, "8.8", says);
     } else {
         kent_derivation_put(d, word->part, part, KENT_FORCE, KENT_COMPUTED, word->says);
     }
@@ -60,7 +68,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
                    w->loads->cases[h->runner_up].name);
-    kent_derivation_put(d, "F2", h->runner_up_load, KENT_FORCE, KENT_COMPUTED, says);
+    kent_derivation_put(d, "Fnext", h->runner_up_load, KENT_FORCE, KENT_COMPUTED, says);
 }
 
 static void derive_peak(const kent_holding_work *w, kent_holding *h)
@@ -71,6 +79,7 @@ static void derive_peak(const kent_holding_work *w, kent_holding *h)
     if (c->scenario < 0) return;
     kent_derivation_put(&h->derivation, "tpk", at->time, KENT_TIME, KENT_COMPUTED,
                         "instant of this peak");
+    if (isnan(c->above_90_percent)) return; /* of a peak on one side of a shut valve */
     kent_derivation_put(&h->derivation, "t90", c->above_90_percent, KENT_TIME,
                         KENT_COMPUTED, "stays above 90 % of its peak for");
 }

@@ -27,7 +27,8 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     kent_notes met; /* what the legs meet; owned */
 } kent_holding_work;
 
-/* N, unfactored and not negative: the part of a case's thrust in one sense. */
+/* N, unfactored and not negative: the part of a case's thrust in one sense, without the
+ * force of the changing flow. */
 double kent_holding_part(const kent_load_case *c, kent_sense sense);
 
 void kent_holding_find(kent_holding_work *w, kent_holding *h);   /* what governs */

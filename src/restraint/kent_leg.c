@@ -126,7 +126,8 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
 
     *out = (kent_leg_work){.factor = factor, .angle = fitting->angle, .length = NAN};
     out->bend = rule->bend && fitting->angle > LEAST_TURN;
-    out->bears = kent_leg_bears(fitting, thrust);
+    out->turns_back = out->bend && fitting->angle > 0.5 * PI + LEAST_TURN;
+    out->bears = !out->turns_back && kent_leg_bears(fitting, thrust);
     if (p->span < 0) return KENT_LACK_PIPE;
     if (fitting->soil < 0) return KENT_LACK_SOIL;
     out->pipe = &m->pipes[m->spans[p->span].pipe];
@@ -141,8 +142,11 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
     leg_grip(m, fitting, out);
     if (out->bend) {
         out->force = push / (2.0 * sin(0.5 * fitting->angle)); /* 11.8 */
-        out->length = kent_restrained_length_bend(out->force, fitting->angle, factor,
-                                                  out->friction, out->bearing);
+        out->length =
+            out->turns_back
+                ? kent_restrained_length_end(out->force, factor, out->friction)
+                : kent_restrained_length_bend(out->force, fitting->angle, factor,
+                                              out->friction, out->bearing);
     } else {
         out->force = push;
         out->length = kent_restrained_length_end(push, factor, out->friction);

@@ -4,6 +4,8 @@
 
 #include <stdio.h>
 
+static const double STANDARD_GRAVITY = 9.80665; /* m/s2: what nobody states */
+
 /* What a metre of pipe weighs, empty and full, and the ground water it displaces. */
 static void derive_weight(const kent_holding_work *w, const kent_leg_work *k,
                           kent_derivation *d)
@@ -11,15 +13,17 @@ static void derive_weight(const kent_holding_work *w, const kent_leg_work *k,
     const kent_pipe *p = k->pipe;
     const double bore = p->inside_diameter;
 
-    kent_derivation_put(d, "OD", p->outside_diameter, KENT_DIAMETER, KENT_GIVEN,
+    const kent_source listed = p->pipe_class[0] ? KENT_CATALOGUE : KENT_GIVEN;
+
+    kent_derivation_put(d, "OD", p->outside_diameter, KENT_DIAMETER, listed,
                         "outside diameter of the leg's pipe");
-    kent_derivation_put(d, "H", k->trench.cover, KENT_LENGTH, KENT_GIVEN,
-                        "cover, ground to crown");
-    kent_derivation_put(d, "g", w->m->gravity, KENT_ACCELERATION, KENT_GIVEN,
+    kent_derivation_put(d, "cover", k->trench.cover, KENT_LENGTH, KENT_GIVEN,
+                        "ground to crown");
+    kent_derivation_put(d, "g", w->m->gravity, KENT_ACCELERATION,
+                        w->m->gravity == STANDARD_GRAVITY ? KENT_ASSUMED : KENT_GIVEN,
                         "gravity");
     if (isnan(p->unit_mass)) {
-        kent_derivation_put(d, "e", p->wall, KENT_DIAMETER, KENT_GIVEN,
-                            "wall, nominal");
+        kent_derivation_put(d, "e", p->wall, KENT_DIAMETER, listed, "wall, nominal");
         kent_derivation_put(d, "rp", p->material_density, KENT_DENSITY, KENT_CATALOGUE,
                             "density of the wall");
         kent_derivation_work(d, "Wp", k->pipe_weight, KENT_FORCE_PER_LENGTH,
@@ -28,7 +32,7 @@ static void derive_weight(const kent_holding_work *w, const kent_leg_work *k,
         kent_derivation_put(d, "Wp", k->pipe_weight, KENT_FORCE_PER_LENGTH,
                             KENT_CATALOGUE, "weight of the pipe");
     }
-    kent_derivation_put(d, "ID", bore, KENT_DIAMETER, KENT_GIVEN, "bore");
+    kent_derivation_put(d, "ID", bore, KENT_DIAMETER, listed, "bore");
     kent_derivation_put(d, "rho", w->m->water.density, KENT_DENSITY, KENT_COMPUTED,
                         "density of the water");
     kent_derivation_work(d, "Ww", k->trench.water_weight, KENT_FORCE_PER_LENGTH,
@@ -54,7 +58,7 @@ static void derive_friction(const kent_leg_work *k, kent_derivation *d)
     const bool sleeved = k->sleeve < 1.0;
 
     kent_derivation_work(d, "We", k->grip.earth_load, KENT_FORCE_PER_LENGTH,
-                         wet ? "ge*H*OD" : "gt*H*OD", "11.3",
+                         wet ? "ge*cover*OD" : "gt*cover*OD", "11.3",
                          "weight of the soil above");
     kent_derivation_work(
         d, "W", 2.0 * k->grip.earth_load + t->pipe_weight + t->water_weight,
@@ -93,8 +97,8 @@ static void derive_bearing(const kent_leg_work *k, kent_derivation *d)
                          "(1 + sin(phi))/(1 - sin(phi))", "10.18",
                          "passive coefficient by Rankine");
     kent_derivation_work(d, "sa", stress, KENT_STRESS,
-                         k->displaced > 0.0 ? "ge*(H + OD/2)" : "gt*(H + OD/2)", "11.6",
-                         "weight of soil above the axis");
+                         k->displaced > 0.0 ? "ge*(cover + OD/2)" : "gt*(cover + OD/2)",
+                         "11.6", "weight of soil above the axis");
     kent_derivation_work(
         d, "Pp", kent_passive_pressure(t->friction_angle, t->cohesion, stress),
         KENT_STRESS, "Kp*sa + 2*c*sqrt(Kp)", "11.6", "passive pressure at the axis");
@@ -125,6 +129,12 @@ static void derive_length(const kent_holding_work *w, const kent_holding *h,
                         "turn of the bend in space");
     kent_derivation_work(d, "S", k->force, KENT_FORCE, "T/(2*sin(theta/2))", "11.8",
                          "pull along each leg");
+    if (k->turns_back) {
+        kent_derivation_work(d, "L", k->length, KENT_LENGTH, "SF*S/Fs", "11.10",
+                             "restrained length, by friction alone: beyond a right "
+                             "angle the legs are drawn along themselves");
+        return;
+    }
     kent_derivation_work(
         d, "L", k->length, KENT_LENGTH,
         k->bears ? "SF*S*tan(theta/2)/(Fs + Rs/2)" : "SF*S*tan(theta/2)/Fs", "11.9",

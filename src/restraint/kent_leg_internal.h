@@ -45,6 +45,7 @@ typedef struct kent_leg_work {
     double sleeve;      /* factor on friction: 1 for a bare pipe */
     bool bend;          /* half the perimeter; else the whole */
     bool bears;         /* half the passive resistance counts */
+    bool turns_back;    /* a bend beyond a right angle: each leg by friction alone */
     double force;       /* N, pressure x area of a bend's leg, or the whole thrust */
     double angle;       /* rad */
     double factor;

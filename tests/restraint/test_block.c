@@ -179,6 +179,30 @@ static void a_sag_gets_a_base_on_the_ground_below(void **state)
     kent_build_clear(&b);
 }
 
+/* Pressed by the test and lifted almost as much by suction: a base on so little ground
+ * would have to be a pillar to weigh enough. */
+static void a_sag_that_suction_lifts_hard_gets_a_weight_not_a_pillar(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {
+        {"test", KENT_CASE_TEST, 1.5, 0.5e6},
+        {"shut", KENT_CASE_OCCASIONAL, 1.5, -0.45e6}};
+    kent_build b = main_that_turns(0.0, -200.0 * tan(5.625 * DEGREE));
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, cases, 2);
+    const kent_holding *h = holding_of(&b, r, "B");
+    const double down = 2.0 * 0.5e6 * 0.25 * PI * 0.62 * 0.62 * sin(5.625 * DEGREE);
+
+    assert_true(h->held);
+    assert_int_equal(h->block.type, KENT_BLOCK_GRAVITY);
+    assert_true(h->block.height <= h->block.width);
+    assert_true(h->block.volume * 23e3 >= 1.5 * 0.9 * down * (1.0 - 1e-6));
+    assert_true(h->block.width * h->block.thickness * 150e3 >=
+                1.5 * down * (1.0 - 1e-6));
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
 static void a_turn_in_plan_and_profile_gets_a_weight_and_a_face(void **state)
 {
     (void)state;
@@ -294,6 +318,7 @@ int main(void)
         cmocka_unit_test(a_crest_gets_a_weight_that_beats_the_lift),
         cmocka_unit_test(a_crest_in_ground_water_takes_more_concrete),
         cmocka_unit_test(a_sag_gets_a_base_on_the_ground_below),
+        cmocka_unit_test(a_sag_that_suction_lifts_hard_gets_a_weight_not_a_pillar),
         cmocka_unit_test(a_turn_in_plan_and_profile_gets_a_weight_and_a_face),
         cmocka_unit_test(a_little_lift_is_left_to_the_weight_of_the_bearing_block),
         cmocka_unit_test(a_face_that_the_pipe_runs_through_bears_on_what_is_left),

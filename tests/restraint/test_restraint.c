@@ -121,6 +121,34 @@ static void each_sense_keeps_its_own_governing_case(void **state)
     finish(&b, r);
 }
 
+/* A surge that pushes less but for a moment changes its flow violently. */
+static void the_force_of_changing_flow_never_governs(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6},
+                                           {"shut", KENT_CASE_OCCASIONAL, 1.5, 0.9e6}};
+    kent_build b = main_of_five();
+    (void)kent_build_scenario(&b, "shut", 60.0);
+    kent_build_derive(&b);
+    kent_loads_result loads = kent_hand_loads(b.model, cases, 2);
+    const int c = kent_build_fitting_of(&b, "C");
+    for (int k = KENT_RESULTANT; k <= KENT_SIDEWAYS; k++) {
+        kent_balance *moved = &loads.fittings[c].cases[1].worst[k].balance;
+        moved->unsteady = kent_vec3_scale(0.5, moved->thrust);
+        moved->thrust = kent_vec3_add(moved->thrust, moved->unsteady);
+    }
+    kent_restraints *r = NULL;
+    kent_error err = {0};
+    assert_int_equal(kent_restraint_size(b.model, &loads, &r, &err), KENT_OK);
+    const kent_holding *h = &r->fittings[c];
+
+    assert_int_equal(h->governing, 0);
+    assert_int_equal(h->by_sense[KENT_RESULTANT], 0);
+    assert_close(h->runner_up_load, 0.9 * h->design_thrust, 1e-12);
+    kent_hand_clear(&loads);
+    finish(&b, r);
+}
+
 static void a_surge_above_the_test_pressure_is_said(void **state)
 {
     (void)state;
@@ -379,6 +407,30 @@ static void a_bend_s_length_is_rounded_up_to_whole_pipes(void **state)
     finish(&b, r);
 }
 
+/* tan(theta/2) of the handbook's form grows without bound towards a return bend. */
+static void beyond_a_right_angle_a_bend_draws_its_legs_along(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    const kent_vec3 left = b.model->points[1].at, corner = b.model->points[2].at;
+    b.model->points[3].at = kent_vec3_add(left, (kent_vec3){0.0, 0.5, 0.0});
+    ask_for_joints(&b, "C");
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = holding_of(&b, r, "C");
+    const double earth = 19e3 * 1.5 * 0.62, iron = PI * 0.61 * 0.01 * 7050.0 * 9.80665;
+    const double water = 1000.0 * 9.80665 * 0.25 * PI * 0.36;
+    const double friction = (2.0 * earth + iron + water) * tan(22.5 * DEGREE);
+
+    assert_true(kent_vec3_length(kent_vec3_sub(left, corner)) > 50.0);
+    assert_true(b.model->fittings[kent_build_fitting_of(&b, "C")].angle >
+                170.0 * DEGREE);
+    assert_int_equal(h->leg_count, 2);
+    assert_close(h->legs[0].length, 1.5 * 1.0e6 * 0.25 * PI * 0.62 * 0.62 / friction,
+                 1e-9);
+    finish(&b, r);
+}
+
 static double length_at_c(kent_build *b)
 {
     kent_build_derive(b);
@@ -565,6 +617,7 @@ int main(void)
         cmocka_unit_test(the_greatest_factored_load_governs_not_the_greatest_thrust),
         cmocka_unit_test(of_equal_loads_the_case_listed_first_governs),
         cmocka_unit_test(each_sense_keeps_its_own_governing_case),
+        cmocka_unit_test(the_force_of_changing_flow_never_governs),
         cmocka_unit_test(a_surge_above_the_test_pressure_is_said),
         cmocka_unit_test(bearing_that_the_depth_cannot_give_is_doubted),
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),
@@ -578,6 +631,7 @@ int main(void)
         cmocka_unit_test(what_is_said_to_help_a_face_too_large_does_help),
         cmocka_unit_test(a_block_larger_than_the_rules_allow_is_refused),
         cmocka_unit_test(a_bend_s_length_is_rounded_up_to_whole_pipes),
+        cmocka_unit_test(beyond_a_right_angle_a_bend_draws_its_legs_along),
         cmocka_unit_test(sleeves_ground_water_and_crests_take_longer_lengths),
         cmocka_unit_test(missing_soil_values_are_named_and_no_length_is_given),
         cmocka_unit_test(adhesion_is_not_asked_for_where_there_is_no_cohesion),
