@@ -15,61 +15,62 @@ static const double SPEED_AT_REST = 1.0;
 /* m: a span that loses less is at rest. Its friction may then be any, within what a
  * steady state may drift. */
 static const double LOSS_AT_REST = 1e-10;
-/* Share of |p - m| by which it may move before k is worked out again. */
-static const double SWING = 1.0 / 32.0;
+/* Reynolds number that counts as 1: both corners of the friction law, 2000 and 4000,
+ * are then edges of bins. */
+static const double CORNER = 2000.0;
+/* In these units; slower counts as the least, faster as the most. */
+static const double LEAST = 0x1p-34, MOST = 0x1.fffffffffffffp16;
 enum {
-    ROTATION = 128, /* steps in which every node gets its turn, about */
-    TABLE = KENT_DRAG_BINS + 1
+    FRACTION = 49, /* bits of a double that tell where in its bin it is */
+    FIRST = (1023 - 34) * KENT_DRAG_OCTAVE /* the bits above them, in LEAST */
 };
-
-static double drag_of(const kent_drag_span *d, double factor)
-{
-    return d->stiffening * (d->per_factor * factor + d->fixed);
-}
 
 static double drag_at(const kent_drag_span *d, double speed)
 {
-    const double v = speed > d->slowest ? speed : d->slowest;
-    return drag_of(d, kent_friction_factor(d->friction, v));
+    const double factor = kent_friction_factor(d->friction, speed);
+    return d->stiffening * (d->per_factor * factor + d->fixed);
 }
 
-/* The top bits of a double, exponent and four of the fraction, number the bins: 16 to
- * an octave, evenly spaced within it. */
-enum { BIN_SHIFT = 48 };
-
-static uint64_t bin_of(double v)
+static uint64_t bits_of(double reynolds)
 {
+    const double within = reynolds < MOST ? reynolds : MOST;
+    const double r = within > LEAST ? within : LEAST; /* NaN too */
     uint64_t bits = 0;
-    memcpy(&bits, &v, sizeof bits);
-    return bits >> BIN_SHIFT;
+    memcpy(&bits, &r, sizeof bits);
+    return bits;
 }
 
-static double bin_edge(uint64_t bin)
+static double of_bits(uint64_t bits)
 {
-    const uint64_t bits = bin << BIN_SHIFT;
     double v = 0.0;
     memcpy(&v, &bits, sizeof v);
     return v;
 }
 
-static double edge_factor(const kent_drag_span *d, uint64_t first, uint64_t bin)
+/* The top bits of a double, exponent and three of the fraction, number its bin: eight
+ * to an octave, evenly spaced within it. */
+static size_t bin_of(uint64_t bits) { return (size_t)((bits >> FRACTION) - FIRST); }
+
+/* 1 at the lower edge of its bin, 9/8 at the upper one. */
+static double place_in_bin(uint64_t bits)
 {
-    double *factor = &d->factor[bin - first];
-    if (*factor == 0.0) *factor = kent_friction_factor(d->friction, bin_edge(bin));
-    return *factor;
+    const uint64_t below = (UINT64_C(1) << FRACTION) - 1;
+    return of_bits((UINT64_C(1023) << 52) | (bits & below));
 }
 
-/* drag_at without its cost: to 1/1000 of the factor, 1/50 across a corner of the law.
- */
-static double drag_near(const kent_drag_span *d, double speed)
+/* k of the law at the lower edge of a bin. */
+static double edge_drag(const kent_drag_span *d, size_t bin)
 {
-    const double v = speed > d->slowest ? speed : d->slowest;
-    const uint64_t first = bin_of(d->slowest), bin = bin_of(v);
-    if (!(v < INFINITY) || bin - first >= KENT_DRAG_BINS) return drag_at(d, speed);
-    const double low = bin_edge(bin), high = bin_edge(bin + 1);
-    const double f = edge_factor(d, first, bin);
-    const double g = edge_factor(d, first, bin + 1);
-    return drag_of(d, f + (g - f) * ((v - low) / (high - low)));
+    const double reynolds = of_bits((uint64_t)(FIRST + bin) << FRACTION);
+    return drag_at(d, reynolds / d->reynolds_per_metre * d->speed_per_metre);
+}
+
+/* k in a straight line over a bin, through the law at its edges. */
+static kent_drag_line line_over(const kent_drag_span *d, size_t bin)
+{
+    const double low = edge_drag(d, bin);
+    const double slope = KENT_DRAG_OCTAVE * (edge_drag(d, bin + 1) - low);
+    return (kent_drag_line){d->trim * (low - slope), d->trim * slope};
 }
 
 static bool at_rest(const kent_model *m, const kent_steady *s, size_t span)
@@ -103,8 +104,10 @@ static void describe_span(const kent_model *m, const kent_grid *grid, size_t i,
     d->per_factor = none ? 0.0 : span->length / (n * span->bore) * per_head;
     d->fixed = none ? 0.0 : span->loss / n * per_head;
     d->stiffening = 1.0;
+    d->trim = 1.0;
     d->speed_per_metre = 1.0 / (2.0 * b * span->area);
-    d->slowest = span->friction.kinematic_viscosity / span->bore;
+    d->reynolds_per_metre =
+        d->speed_per_metre * span->bore / (CORNER * span->friction.kinematic_viscosity);
 }
 
 /* Whether a span must be swept implicitly, and how stiff k then is. */
@@ -136,6 +139,19 @@ static kent_status choose_scheme(const kent_model *m, const kent_steady *s,
     return KENT_OK;
 }
 
+/* At the steady flow the table must give the law itself: all of it is moved by the
+ * little that it misses there. */
+static void trim_table(kent_drag_span *d, double steady_speed)
+{
+    const uint64_t bits =
+        bits_of(steady_speed / d->speed_per_metre * d->reynolds_per_metre);
+    const kent_drag_line line = line_over(d, bin_of(bits));
+    const double near = line.at_nil + line.slope * place_in_bin(bits);
+    const double law = drag_at(
+        d, fmax(steady_speed, LEAST / d->reynolds_per_metre * d->speed_per_metre));
+    if (near > 0.0) d->trim = law / near;
+}
+
 kent_status kent_drag_new(const kent_model *m, const kent_steady *s,
                           const kent_grid *grid, kent_drag **out, kent_error *err)
 {
@@ -146,17 +162,18 @@ kent_status kent_drag_new(const kent_model *m, const kent_steady *s,
     d->follows = m->solver.friction == KENT_SURGE_QUASI_STEADY;
     d->spans = kent_alloc(m->span_count, sizeof *d->spans);
     d->implicit = kent_alloc(m->span_count, sizeof *d->implicit);
-    d->swing = kent_alloc(grid->node_total, sizeof *d->swing);
-    if (!d->spans || !d->implicit || !d->swing) goto done;
+    if (!d->spans || !d->implicit) goto done;
     if (d->follows) {
-        d->factors = kent_alloc(m->span_count, TABLE * sizeof *d->factors);
-        if (!d->factors) goto done;
+        d->lines = kent_alloc(m->span_count, KENT_DRAG_BINS * sizeof *d->lines);
+        if (!d->lines) goto done;
     }
     for (size_t i = 0; i < m->span_count; i++) {
-        if (d->follows) d->spans[i].factor = d->factors + i * TABLE;
         describe_span(m, grid, i, &d->spans[i]);
         status = choose_scheme(m, s, grid, i, d, err);
         if (status != KENT_OK) goto done;
+        if (!d->follows) continue;
+        d->spans[i].line = d->lines + i * KENT_DRAG_BINS;
+        trim_table(&d->spans[i], starting_speed(m, s, i));
     }
     *out = d;
     d = NULL;
@@ -170,19 +187,9 @@ void kent_drag_free(kent_drag *d)
 {
     if (!d) return;
     free(d->spans);
-    free(d->factors);
+    free(d->lines);
     free(d->implicit);
-    free(d->swing);
     free(d);
-}
-
-/* Remembers at which flow a node's k was worked out; returns its speed, m/s. */
-static double note_swing(kent_drag *d, const kent_waves *w, size_t span, size_t node)
-{
-    const kent_drag_span *of = &d->spans[span];
-    const double swing = fabs(w->p[node] - w->m[node]);
-    d->swing[node] = fmax(swing, of->slowest / of->speed_per_metre);
-    return swing * of->speed_per_metre;
 }
 
 void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
@@ -191,52 +198,32 @@ void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
     for (size_t i = 0; i < w->span_count; i++) {
         const double k = drag_at(&d->spans[i], starting_speed(m, s, i));
         for (size_t j = 0; j <= w->reaches[i]; j++) {
-            const size_t node = w->first[i] + j;
-            w->k[node] = k;
-            (void)note_swing(d, w, i, node);
+            w->k[w->first[i] + j] = k;
         }
     }
 }
 
-static void refresh_moved(kent_drag *d, kent_waves *w, size_t span)
+/* drag_at of n nodes without its cost. */
+static void follow_flow(const kent_drag_span *d, size_t n, const double *restrict p,
+                        const double *restrict m, double *restrict k)
 {
-    const size_t first = w->first[span], n = w->reaches[span] + 1;
-    const double *p = w->p + first, *m = w->m + first, *swing = d->swing + first;
-    const double least = d->spans[span].slowest / d->spans[span].speed_per_metre;
-    int64_t moved = 0; /* counted first: that loop is vectors, and mostly finds none */
+    const double scale = d->reynolds_per_metre;
+    kent_drag_line *const lines = d->line;
 
     for (size_t i = 0; i < n; i++) {
-        const double now = fabs(p[i] - m[i]);
-        const double gap = fabs((now > least ? now : least) - swing[i]);
-        moved += gap > SWING * swing[i] ? 1 : 0;
-    }
-    if (moved == 0) return;
-    for (size_t i = 0; i < n; i++) {
-        const double now = fabs(p[i] - m[i]);
-        const double gap = fabs((now > least ? now : least) - swing[i]);
-        if (gap <= SWING * swing[i]) continue;
-        w->k[first + i] = drag_near(&d->spans[span], note_swing(d, w, span, first + i));
-    }
-}
-
-static void refresh_in_rotation(kent_drag *d, kent_waves *w)
-{
-    for (size_t left = w->node_total / ROTATION + 1; left > 0; left--) {
-        const size_t node = w->first[d->next_span] + d->next_node;
-        w->k[node] =
-            drag_at(&d->spans[d->next_span], note_swing(d, w, d->next_span, node));
-        d->next_node++;
-        if (d->next_node <= w->reaches[d->next_span]) continue;
-        d->next_node = 0;
-        d->next_span = d->next_span + 1 < w->span_count ? d->next_span + 1 : 0;
+        const uint64_t bits = bits_of(fabs(p[i] - m[i]) * scale);
+        kent_drag_line *line = &lines[bin_of(bits)];
+        if (line->at_nil == 0.0) *line = line_over(d, bin_of(bits));
+        k[i] = line->at_nil + line->slope * place_in_bin(bits);
     }
 }
 
 void kent_drag_refresh(kent_drag *d, kent_waves *w)
 {
-    if (!d->follows || w->span_count == 0) return;
-    for (size_t span = 0; span < w->span_count; span++) {
-        refresh_moved(d, w, span);
+    if (!d->follows) return;
+    for (size_t i = 0; i < w->span_count; i++) {
+        const size_t first = w->first[i];
+        follow_flow(&d->spans[i], w->reaches[i] + 1, w->p + first, w->m + first,
+                    w->k + first);
     }
-    refresh_in_rotation(d, w);
 }

@@ -103,6 +103,46 @@ static void without_an_event_nothing_changes(void **state)
     }
 }
 
+/* Where hardly anything flows, where the table of friction factors
+ * is coarse (laminar), where the law has corners, and in rough turbulent flow. */
+static void a_flow_of_any_reynolds_number_stands_still(void **state)
+{
+    (void)state;
+    static const double fall[] = {1e-6, 2e-3, 8.25, 16.0, 60.0, 6000.0}; /* m */
+    static const double least[] = {0.0, 0.1, 2000.0, 2500.0, 4000.0, 50000.0};
+    static const double most[] = {0.001, 1.0, 2500.0, 4000.0, 10000.0, 200000.0};
+    for (int i = 0; i < 6; i++) {
+        kent_build b = kent_build_new();
+        kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+        kent_build_point(&b, "S", 10000.0, 0.0, 0.0);
+        const int p = kent_build_pipe(&b, "main", "R S", 0.02, 1000.0);
+        b.model->pipes[p].friction = KENT_COLEBROOK_WHITE;
+        b.model->pipes[p].friction_coefficient = 1e-4;
+        kent_build_fixed_level(&b, "R", 20.0 + fall[i]);
+        kent_build_fixed_level(&b, "S", 20.0);
+        b.model->solver.friction = KENT_SURGE_QUASI_STEADY;
+        b.model->solver.min_reaches = 200;
+        march m = march_new(&b, 60.0, -1, WATCHES, 1, 1000);
+        const kent_span *span = &b.model->spans[0];
+        const double flow = m.steady->span_flow[0], speed = fabs(flow) / span->area;
+        const double impedance =
+            m.grid->wave_speed_used[0] / (b.model->gravity * span->area); /* s/m2 */
+        double now_head[201], now_flow[201];
+        const double reynolds = speed * span->bore / span->friction.kinematic_viscosity;
+        print_message("fall %g m: Reynolds number %g\n", fall[i], reynolds);
+        assert_true(reynolds >= least[i] && reynolds <= most[i]);
+        assert_int_equal(m.grid->reaches[0], 200);
+        run(m.marcher, 20001, 1000);
+        assert_within(largest_swing(&m, m.marcher), 0.0, 1e-9);
+        kent_marcher_profile(m.marcher, 0, now_head, now_flow);
+        for (int j = 0; j <= 200; j++) {
+            assert_within(impedance * (now_flow[j] - flow), 0.0, 1e-9);
+        }
+        march_clear(&m);
+        kent_build_clear(&b);
+    }
+}
+
 static void the_first_instant_is_the_steady_state(void **state)
 {
     (void)state;
@@ -520,6 +560,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(without_an_event_nothing_changes),
+        cmocka_unit_test(a_flow_of_any_reynolds_number_stands_still),
         cmocka_unit_test(the_first_instant_is_the_steady_state),
         cmocka_unit_test(raising_everything_raises_the_heads_and_nothing_else),
         cmocka_unit_test(kernels_and_block_sizes_give_the_same_bits),
