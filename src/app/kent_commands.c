@@ -114,8 +114,10 @@ static kent_exit read_case(session *s)
 {
     const kent_exit failed = read_catalogue(s);
     if (failed) return failed;
-    const kent_status status = kent_case_read(s->options->subject, s->catalogue,
-                                              &s->model, &s->complaints, &s->error);
+    const kent_options *o = s->options;
+    const kent_status status =
+        kent_case_read(o->subject, s->catalogue, o->units_given ? &o->units : NULL,
+                       &s->model, &s->complaints, &s->error);
     if (!status) return KENT_EXIT_DONE;
     const kent_exit code = fail(s, status);
     return status == KENT_E_IO ? KENT_EXIT_INPUT : code; /* no such file: bad usage */
@@ -187,11 +189,9 @@ static kent_exit find_fitting(const session *s, int *fitting)
 
 static kent_report_options report_options(const session *s)
 {
-    const kent_options *o = s->options;
-    kent_system units = KENT_SI;
-    if (s->model) units = s->model->units;
-    if (o->units_given) units = o->units;
-    return (kent_report_options){.units = units, .wide = o->wide};
+    const kent_options *o = s->options; /* units: SI unless given, of a catalogue */
+    return (kent_report_options){.units = s->model ? s->model->units : o->units,
+                                 .wide = o->wide};
 }
 
 static kent_exit do_job(session *s)
@@ -223,6 +223,16 @@ static kent_status print_results(const session *s, kent_text *text)
     return kent_report_tables(s->results, &o, sink);
 }
 
+/* What the tables and results.json say of the whole case has no row in a CSV table. */
+static void say_cautions(const session *s)
+{
+    const kent_notes *cautions = &s->results->cautions;
+    if (s->options->format != KENT_CSV_FORMAT || s->options->quiet) return;
+    for (size_t i = 0; i < cautions->count; i++) {
+        (void)fprintf(stderr, "caution: %s\n", cautions->text[i]);
+    }
+}
+
 /* The folder is filled beside its place, then the tables are printed, then the folder
  * is put in place: where printing fails, the old results still stand. */
 static kent_exit write_results(session *s)
@@ -240,6 +250,7 @@ static kent_exit write_results(session *s)
     if (!status) status = print_results(s, &text);
     if (!status) status = kent_output_print(&text, &s->error);
     if (!status && folder) status = kent_folder_commit(folder, &s->error);
+    if (!status) say_cautions(s);
     if (status) {
         say_error(&s->error, status);
     } else if (folder && !s->options->quiet) {

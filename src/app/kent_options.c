@@ -106,6 +106,7 @@ const char *kent_options_nearest(const char *word, const char *const *words,
     const char *nearest = NULL;
     size_t least = SIZE_MAX;
     for (size_t i = 0; i < count; i++) {
+        if (strcasecmp(word, words[i]) == 0) return words[i];
         const size_t distance = kent_text_distance(word, words[i]);
         const size_t near = 1 + strlen(words[i]) / 3;
         if (distance > near || distance >= least) continue;

@@ -64,7 +64,7 @@ static void fill_head(kent_filling *f, const char *path)
     if (length > 4 && strcmp(name + length - 4, ".cfg") == 0) name[length - 4] = '\0';
 
     kent_record_copy(&f->root, "title", name, m->title, sizeof m->title);
-    m->units = f->reader.system;
+    m->units = f->shown ? *f->shown : f->reader.system;
     if (!read_group(f, &f->root, "project", &project)) return;
     kent_project *p = &m->project;
     kent_record_copy(&project, "number", NULL, p->number, sizeof p->number);
@@ -338,8 +338,8 @@ static void fill_all(kent_filling *f, const char *path)
 }
 
 kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
-                           kent_model **out, kent_complaints *complaints,
-                           kent_error *err)
+                           const kent_system *shown, kent_model **out,
+                           kent_complaints *complaints, kent_error *err)
 {
     assert(path && catalogue && out && complaints && err);
     const size_t before = complaints->count;
@@ -349,6 +349,7 @@ kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
     if (!f) goto done;
 
     f->catalogue = catalogue;
+    f->shown = shown;
     f->reader.complaints = complaints;
     f->model = kent_model_new();
     if (!f->model) status = kent_error_nomem(err);

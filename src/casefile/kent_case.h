@@ -6,10 +6,12 @@
 #include "kent_model.h"
 
 /* Reads the case at path ("-": standard input) with the catalogue, validates it against
- * the key table, and derives the model. KENT_E_INPUT: complaints say everything that is
- * wrong, with file and line. KENT_E_IO and KENT_E_NOMEM: err. *out is the caller's. */
+ * the key table, and derives the model. shown: the system of units that everything said
+ * of the case uses; NULL: the one that it names. KENT_E_INPUT: complaints say
+ * everything that is wrong, with file and line. KENT_E_IO and KENT_E_NOMEM: err. *out
+ * is the caller's. */
 kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
-                           kent_model **out, kent_complaints *complaints,
-                           kent_error *err);
+                           const kent_system *shown, kent_model **out,
+                           kent_complaints *complaints, kent_error *err);
 
 #endif

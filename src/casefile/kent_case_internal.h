@@ -8,6 +8,7 @@
 typedef struct kent_filling {
     kent_reader reader;
     const kent_catalogue *catalogue;
+    const kent_system *shown; /* NULL: the case's own */
     kent_model *model;
     kent_record root;      /* the case's own group */
     size_t route_capacity; /* of model->route, and so on */

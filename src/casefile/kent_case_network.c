@@ -154,9 +154,8 @@ static void fill_friction(kent_filling *f, kent_record *record,
     p->friction = KENT_COLEBROOK_WHITE;
     p->friction_coefficient = row->roughness;
     (void)snprintf(what, sizeof what, "roughness of %s", row->id);
-    char value[32];
-    (void)snprintf(value, sizeof value, "%.3g mm", 1e3 * row->roughness);
-    kent_fill_assume(f, what, value, "catalogue, no friction given");
+    kent_fill_assume_value(f, what, row->roughness, KENT_DIAMETER,
+                           "catalogue, no friction given");
 }
 
 static void fill_joint(kent_filling *f, kent_record *record, kent_pipe *p)

@@ -1,5 +1,7 @@
 #include "kent_limits.h"
 
+#include "kent_said.h"
+
 /* A peak in the last 2 % of the duration may not be the last word. */
 static const double LATE_SHARE = 0.02;
 
@@ -37,11 +39,11 @@ static void judge_rating(kent_results *r, const kent_scenario_result *run)
         if (!isfinite(rating)) continue;
         const double reached = highest_on_span(r, run, (int)i, &chainage);
         if (reached <= rating) continue;
-        kent_notes_add(
-            &r->cautions,
-            "pipe %s: %.2f bar reached %.0f m along it in %s, rated %.2f bar",
-            m->spans[i].id, reached / 1e5, chainage, m->scenarios[run->scenario].id,
-            rating / 1e5);
+        kent_notes_add(&r->cautions, "pipe %s: %s reached %s along it in %s, rated %s",
+                       m->spans[i].id, kent_said_of(KENT_PRESSURE, m->units, reached).s,
+                       kent_said_whole(KENT_LENGTH, m->units, chainage).s,
+                       m->scenarios[run->scenario].id,
+                       kent_said_of(KENT_PRESSURE, m->units, rating).s);
         r->limit_exceeded = true;
     }
 }
@@ -98,9 +100,11 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
         if (!run->grid->misses[i]) continue;
         kent_notes_add(
             &r->cautions,
-            "span %s is short for the common step: its wave speed %.0f m/s is "
-            "marched as %.0f m/s (inertia kept)",
-            m->spans[i].id, m->spans[i].wave_speed, run->grid->wave_speed_used[i]);
+            "span %s is short for the common step: its wave speed %s is marched as "
+            "%s (inertia kept)",
+            m->spans[i].id,
+            kent_said_whole(KENT_SPEED, m->units, m->spans[i].wave_speed).s,
+            kent_said_whole(KENT_SPEED, m->units, run->grid->wave_speed_used[i]).s);
     }
 }
 

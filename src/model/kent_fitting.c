@@ -303,7 +303,7 @@ static void caution_turning(const kent_site *site, const kent_fitting *f)
     const double turn = kent_ports_turn(site->ports);
     if (turn <= fmax(KENT_LEAST_TURN, site->deflection)) return;
     kent_notes_add(&site->m->cautions,
-                   "%s at \"%s\" also turns by %.1f deg: its thrust takes that in",
+                   "%s at \"%s\" also turns by %.1f°: its thrust takes that in",
                    kent_fitting_type_word(f->type), f->id, degrees(turn));
 }
 

@@ -32,7 +32,9 @@ static void finish(const kent_view *v, const char *heading, kent_table *t)
 {
     if (t->cell_count > 0 || t->failed) {
         kent_text_add(v->out, "\n%s\n", heading);
-        (void)kent_table_print(t, v->limit, v->out);
+        if (kent_table_print(t, v->limit, v->out)) {
+            kent_text_add(v->out, "%s\n", KENT_TABLE_CUT);
+        }
     }
     kent_table_clear(t);
 }
@@ -379,15 +381,23 @@ static void print_steady_report(const kent_view *v)
     const kent_steady_report *s = v->steady ? &v->steady->report : NULL;
     kent_text words = {0};
     if (!s || v->model->span_count == 0) return;
+    const char *where = s->worst_node >= 0
+                            ? point_id(v->model, v->model->nodes[s->worst_node].point)
+                            : "no free point";
     kent_text_add(&words,
-                  "Steady state: %d iterations, worst imbalance %.2g m3/s at %s, worst "
-                  "head gap %.2g m.",
-                  s->iterations, s->worst_imbalance,
-                  s->worst_node >= 0
-                      ? point_id(v->model, v->model->nodes[s->worst_node].point)
-                      : "no free point",
-                  s->worst_head_gap);
-    if (v->grid) kent_text_add(&words, " Time step %.6g s.", v->grid->step);
+                  "Steady state: %d iterations, worst imbalance %.2g %s at %s, worst "
+                  "head gap %.2g %s.",
+                  s->iterations,
+                  kent_units_shown(KENT_FLOW, v->units, s->worst_imbalance),
+                  kent_shown_unit(KENT_FLOW, v->units).text, where,
+                  kent_units_shown(KENT_LENGTH, v->units, s->worst_head_gap),
+                  kent_shown_unit(KENT_LENGTH, v->units).text);
+    if (v->grid) kent_text_add(&words, " Time step %.6g s", v->grid->step);
+    if (v->grid && v->model->solver.grid_check) {
+        kent_text_add(&words, ", and half of it: the figures printed are those of the "
+                              "half, the grid band is the difference");
+    }
+    if (v->grid) kent_text_add(&words, ".");
     kent_table_paragraph(v->out, v->limit, "", kent_text_of(&words));
     v->out->failed = v->out->failed || words.failed;
     kent_text_clear(&words);

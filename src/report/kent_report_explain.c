@@ -210,9 +210,8 @@ static void print_cases(const kent_sheet *s)
     (void)kent_table_print(&t, s->limit, s->out);
     kent_table_clear(&t);
     if (s->holding->governing >= 0) {
-        static const char *const SENSES[KENT_SENSES] = {
-            "thrust", "sideways thrust", "upward thrust", "downward thrust"};
-        kent_text_add(s->out, "*  governs, by its %s\n", SENSES[s->holding->sense]);
+        kent_text_add(s->out, "*  governs, by its %s thrust\n",
+                      kent_shown_sense(s->holding->sense));
     }
 }
 
@@ -329,6 +328,19 @@ static void add_leg(const kent_sheet *s, const kent_leg *leg, kent_text *words)
     if (!leg->fits) kent_text_add(words, " (does not fit before the next fitting)");
 }
 
+/* "block 1.05 × 0.70 × 0.45 m"; a volume or a length has its unit already. */
+static void add_part(const kent_sheet *s, const kent_part *part, kent_text *words)
+{
+    const kent_block *b = &s->holding->block;
+    const bool block = s->holding->held && b->type != KENT_BLOCK_NONE;
+    const bool sides = block && (part->face || b->type != KENT_BLOCK_GRAVITY);
+    kent_text_add(
+        words, "%s%s%s",
+        kent_shown_part(s->model, s->fitting, s->holding, part, s->units, KENT_ROOMY)
+            .text,
+        sides ? " " : "", sides ? kent_shown_unit(KENT_LENGTH, s->units).text : "");
+}
+
 /* What holds it, and the restrained length beside it. */
 static void print_outcome(const kent_sheet *s)
 {
@@ -339,9 +351,8 @@ static void print_outcome(const kent_sheet *s)
     for (size_t i = 0; i < count; i++) {
         const kent_part *p = &parts[i];
         kent_text_reset(&words);
-        kent_text_add(
-            &words, "%s %s", i > 0 ? "and by:" : "Held by:",
-            kent_shown_part(s->model, s->fitting, h, p, s->units, KENT_ROOMY).text);
+        kent_text_add(&words, i > 0 ? "and by " : "Held by ");
+        add_part(s, p, &words);
         if (isfinite(p->factor_reached) && p->governing >= 0) {
             kent_text_add(&words, ", against %s; factor reached %.2f, asked %.2f; ",
                           s->loads->cases[p->governing].name, p->factor_reached,
@@ -368,12 +379,17 @@ static void print_outcome(const kent_sheet *s)
     kent_text_clear(&words);
 }
 
+/* Of this fitting, then of the case and its runs. */
 static void print_cautions(const kent_sheet *s)
 {
-    const kent_notes *cautions = &s->holding->cautions;
-    if (cautions->count > 0) kent_text_add(s->out, "\nCautions\n");
-    for (size_t i = 0; i < cautions->count; i++) {
-        kent_table_paragraph(s->out, s->limit, "!  ", cautions->text[i]);
+    static const char *const LEADS[] = {"-  ", "!  "}; /* as under the table */
+    const kent_notes *notes[] = {&s->holding->cautions, &s->results->cautions};
+    if (notes[0]->count + notes[1]->count == 0) return;
+    kent_text_add(s->out, "\nCautions\n");
+    for (size_t k = 0; k < 2; k++) {
+        for (size_t i = 0; i < notes[k]->count; i++) {
+            kent_table_paragraph(s->out, s->limit, LEADS[k], notes[k]->text[i]);
+        }
     }
 }
 

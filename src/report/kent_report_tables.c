@@ -341,8 +341,7 @@ static void print_totals(kent_page *page)
     }
     kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
     if (page->cut) {
-        kent_table_paragraph(page->out, page->limit, "",
-                             "Names that end in … are whole with --wide.");
+        kent_table_paragraph(page->out, page->limit, "", KENT_TABLE_CUT);
     }
     page->out->failed = page->out->failed || words.failed;
     kent_text_clear(&words);

@@ -1,4 +1,5 @@
 #include "kent_shown.h"
+#include "kent_said.h"
 
 #include <math.h>
 #include <stdarg.h>
@@ -17,6 +18,23 @@ __attribute__((format(printf, 1, 2))) static kent_shown shown(const char *fmt, .
     return s;
 }
 
+const char *kent_shown_sense(kent_sense sense)
+{
+    switch (sense) {
+    case KENT_RESULTANT:
+        return "whole";
+    case KENT_SIDEWAYS:
+        return "sideways";
+    case KENT_UPWARD:
+        return "upward";
+    case KENT_DOWNWARD:
+        return "downward";
+    case KENT_SENSES:
+        break;
+    }
+    return "";
+}
+
 kent_shown kent_shown_number(double value, int decimals)
 {
     if (!isfinite(value)) return shown(KENT_SHOWN_NONE);
@@ -32,28 +50,13 @@ kent_shown kent_shown_quantity(kent_kind kind, kent_system system, double si)
 
 kent_shown kent_shown_unit(kent_kind kind, kent_system system)
 {
-    const char *unit = kent_units_display(kind, system).unit;
-    if (strcmp(unit, "deg") == 0) return shown("°");
-    if (strcmp(unit, "degC") == 0) return shown("°C");
-    if (strcmp(unit, "degF") == 0) return shown("°F");
-    kent_shown s = {{0}};
-    for (size_t i = 0, length = 0; unit[i] != '\0' && length + 3 < sizeof s.text; i++) {
-        const char *raised = unit[i] == '2' ? "²" : unit[i] == '3' ? "³" : NULL;
-        const char plain[2] = {unit[i], '\0'};
-        const char *piece = raised ? raised : plain;
-        memcpy(s.text + length, piece, strlen(piece) + 1);
-        length += strlen(piece);
-    }
-    return s;
+    return shown("%s", kent_said_unit(kind, system).s);
 }
 
 kent_shown kent_shown_with_unit(kent_kind kind, kent_system system, double si)
 {
-    const kent_shown number = kent_shown_quantity(kind, system, si);
-    const kent_shown unit = kent_shown_unit(kind, system);
-    if (!isfinite(si)) return number;
-    const char *gap = unit.text[0] == '\0' || strcmp(unit.text, "°") == 0 ? "" : " ";
-    return shown("%.60s%s%.60s", number.text, gap, unit.text);
+    if (!isfinite(si)) return shown(KENT_SHOWN_NONE);
+    return shown("%s", kent_said_of(kind, system, si).s);
 }
 
 kent_shown kent_shown_station(kent_system system, double station)

@@ -14,6 +14,9 @@ typedef struct kent_shown {
 
 #define KENT_SHOWN_NONE "–"
 
+/* Which part of a thrust: "whole", "sideways", "upward", "downward". */
+const char *kent_shown_sense(kent_sense sense);
+
 /* With so many decimals, never "-0.0"; infinity is a dash too. */
 kent_shown kent_shown_number(double value, int decimals);
 

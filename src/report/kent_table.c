@@ -210,17 +210,26 @@ void kent_table_clear(kent_table *t)
     *t = (kent_table){.columns = t->columns, .column_count = t->column_count};
 }
 
-/* Bytes of s to put on a line of `room` columns: to the last blank that fits, else the
- * whole first word, however long. */
+/* Whether a line may end at this blank: a number keeps the unit behind it. */
+static bool may_break(const char *s, size_t blank)
+{
+    return blank > 0 && s[blank] == ' ' &&
+           !(s[blank - 1] >= '0' && s[blank - 1] <= '9');
+}
+
+/* Bytes of s to put on a line of `room` columns: to the last blank that fits and may
+ * end a line, else to the last that fits, else as much of a long word as does. */
 static size_t line_bytes(const char *s, size_t room)
 {
     const size_t fits = prefix_bytes(s, room);
-    size_t bytes = fits;
-    if (s[fits] == '\0' || s[fits] == ' ') return fits;
-    while (bytes > 0 && s[bytes] != ' ') {
-        bytes--;
+    size_t blank = fits, any = 0;
+    if (s[fits] == '\0') return fits;
+    for (; blank > 0; blank--) {
+        if (s[blank] != ' ') continue;
+        if (may_break(s, blank)) return blank;
+        if (any == 0) any = blank;
     }
-    return bytes > 0 ? bytes : fits > 0 ? fits : code_point_bytes(s);
+    return any > 0 ? any : fits > 0 ? fits : code_point_bytes(s);
 }
 
 void kent_table_paragraph(kent_text *out, size_t limit, const char *lead,

@@ -8,6 +8,9 @@
 
 enum { KENT_TABLE_LIMIT = 100 }; /* columns of a printed line unless asked for wide */
 
+/* What to print under a table of which kent_table_print says that it cut something. */
+#define KENT_TABLE_CUT "Names that end in … are whole with --wide."
+
 typedef enum kent_align { KENT_ALIGN_LEFT, KENT_ALIGN_RIGHT } kent_align;
 
 typedef struct kent_column {
@@ -40,8 +43,8 @@ size_t kent_table_width(const kent_table *t);
 bool kent_table_print(const kent_table *t, size_t limit, kent_text *out);
 void kent_table_clear(kent_table *t);
 
-/* A paragraph behind a lead ("a  "), broken at blanks, its later lines indented by the
- * lead. limit 0: one line. */
+/* A paragraph behind a lead ("a  "), broken at blanks but not behind a number, whose
+ * unit would be lost; later lines indented by the lead. limit 0: one line. */
 void kent_table_paragraph(kent_text *out, size_t limit, const char *lead,
                           const char *words);
 

@@ -1,5 +1,5 @@
 #include "kent_holding_internal.h"
-#include "kent_said_internal.h"
+#include "kent_said.h"
 
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
 static const double KNOCK = 0.1;
@@ -38,8 +38,8 @@ static void caution_test_pressure(const kent_holding_work *w, kent_holding *h)
     }
     if (!worst || !(highest > test * (1.0 + 1e-9))) return; /* NAN: no test case */
     kent_notes_add(&h->cautions, "'%s' reaches %s here, above the test pressure of %s",
-                   worst->name, kent_say(units, KENT_PRESSURE, highest).s,
-                   kent_say(units, KENT_PRESSURE, test).s);
+                   worst->name, kent_said_of(KENT_PRESSURE, units, highest).s,
+                   kent_said_of(KENT_PRESSURE, units, test).s);
 }
 
 static void caution_peak(const kent_holding_work *w, kent_holding *h)
@@ -69,14 +69,14 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
         kent_notes_add(&h->cautions,
                        "soil '%s': %s at this depth asks for a passive coefficient of "
                        "%.1f, which is unlikely",
-                       s->id, kent_say(units, KENT_STRESS, claimed).s,
+                       s->id, kent_said_of(KENT_STRESS, units, claimed).s,
                        claimed / stress);
     } else {
         kent_notes_add(&h->cautions,
                        "soil '%s': %s at this depth asks for a passive coefficient of "
                        "%.1f; its friction angle gives %.1f",
-                       s->id, kent_say(units, KENT_STRESS, claimed).s, claimed / stress,
-                       kent_rankine_passive(s->friction_angle));
+                       s->id, kent_said_of(KENT_STRESS, units, claimed).s,
+                       claimed / stress, kent_rankine_passive(s->friction_angle));
     }
 }
 
@@ -95,7 +95,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     if (w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions,
                        "straps or rods from pipe to block must carry %s upwards",
-                       kent_say(units, KENT_FORCE, w->demand.load[KENT_UPWARD]).s);
+                       kent_said_of(KENT_FORCE, units, w->demand.load[KENT_UPWARD]).s);
         if (!w->soil) {
             kent_notes_add(&h->cautions,
                            "the soil under the gravity block is not stated");
@@ -111,7 +111,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     }
     if (h->design_thrust > LARGE) {
         kent_notes_add(&h->cautions, "beyond %s the concrete itself must be designed",
-                       kent_say(units, KENT_FORCE, LARGE).s);
+                       kent_said_of(KENT_FORCE, units, LARGE).s);
     }
 }
 
@@ -137,12 +137,12 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
     if (w->fitting->within_deflection) {
         kent_notes_add(&h->cautions,
                        "a turn of %s is within what the joint takes: listed, not held",
-                       kent_say(w->m->units, KENT_ANGLE, w->fitting->angle).s);
+                       kent_said_of(KENT_ANGLE, w->m->units, w->fitting->angle).s);
     } else if (h->needs_nothing) {
         kent_notes_add(&h->cautions,
                        "no load case pushes with more than %s: nothing is "
                        "needed",
-                       kent_say(w->m->units, KENT_FORCE, KENT_HOLDING_LEAST).s);
+                       kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s);
     }
     caution_test_pressure(w, h);
     if (h->needs_nothing) return;

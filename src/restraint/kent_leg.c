@@ -1,6 +1,6 @@
 #include "kent_leg_internal.h"
 #include "kent_block_internal.h"
-#include "kent_said_internal.h"
+#include "kent_said.h"
 
 #include <assert.h>
 #include <stdlib.h>
@@ -320,7 +320,8 @@ bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t 
         notes,
         "the restrained length of %s is longer than the %s of pipe up to %s: "
         "restrain every joint and anchor the rest there",
-        kent_say(m->units, KENT_LENGTH, length).s,
-        kent_say(m->units, KENT_LENGTH, there).s, m->points[m->nodes[node].point].id);
+        kent_said_of(KENT_LENGTH, m->units, length).s,
+        kent_said_of(KENT_LENGTH, m->units, there).s,
+        m->points[m->nodes[node].point].id);
     return false;
 }

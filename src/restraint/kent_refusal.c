@@ -1,5 +1,5 @@
 #include "kent_holding_internal.h"
-#include "kent_said_internal.h"
+#include "kent_said.h"
 
 static const struct {
     unsigned lack;
@@ -27,7 +27,7 @@ static void joints_offer(const kent_holding_work *w, const kent_holding *h,
         return;
     }
     kent_text_add(t, "restrained joints over %s %s%s",
-                  kent_say(w->m->units, KENT_LENGTH, h->restrained_length).s,
+                  kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s,
                   kent_leg_rule_of(w->fitting->type)->says,
                   fits ? "" : " and beyond what they meet");
 }
@@ -40,18 +40,19 @@ static void refuse_face(const kent_holding_work *w, const kent_holding *h, kent_
     const double cover = kent_face_cover_needed(&w->m->rules, &w->site, sideways);
     const double bearing = kent_face_bearing_needed(&w->m->rules, &w->site, sideways);
 
-    kent_text_add(t,
-                  "no block: a face of %s does not fit under the greatest height of "
-                  "%s at this depth; ",
-                  kent_say(units, KENT_AREA, h->block.bearing_area + w->site.hole).s,
-                  kent_say(units, KENT_LENGTH, limit).s);
+    kent_text_add(
+        t,
+        "no block: a face of %s does not fit under the greatest height of "
+        "%s at this depth; ",
+        kent_said_of(KENT_AREA, units, h->block.bearing_area + w->site.hole).s,
+        kent_said_of(KENT_LENGTH, units, limit).s);
     if (!isnan(cover)) {
         kent_text_add(t, "a cover of %s would serve, ",
-                      kent_say(units, KENT_LENGTH, cover).s);
+                      kent_said_of(KENT_LENGTH, units, cover).s);
     }
     if (!isnan(bearing)) {
         kent_text_add(t, "or ground that bears %s, ",
-                      kent_say(units, KENT_STRESS, bearing).s);
+                      kent_said_of(KENT_STRESS, units, bearing).s);
     }
     kent_text_add(t, "or ");
     joints_offer(w, h, t);
@@ -71,7 +72,7 @@ static void refuse_soil(const kent_holding_work *w, kent_text *t)
         if (p->span < 0 || p->toward < 0) continue;
         const int sound = kent_leg_sound(m, p, &distance);
         if (distance <= 0.0) continue; /* nothing lies that way */
-        const kent_said far = kent_say(m->units, KENT_LENGTH, distance);
+        const kent_said far = kent_said_whole(KENT_LENGTH, m->units, distance);
         const char *toward = m->points[p->toward].id;
         if (sound >= 0) {
             kent_text_add(t, "%s%s towards %s into the %s at %s", sep, far.s, toward,
@@ -108,14 +109,14 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         kent_text_add(t,
                       "no block: a cover of %s is less than the least, %s; lay the "
                       "main that deep, or ",
-                      kent_say(units, KENT_LENGTH, w->site.cover).s,
-                      kent_say(units, KENT_LENGTH, rules->least_cover).s);
+                      kent_said_of(KENT_LENGTH, units, w->site.cover).s,
+                      kent_said_of(KENT_LENGTH, units, rules->least_cover).s);
         break;
     case KENT_FAULT_VOLUME:
         kent_text_add(t,
                       "no block: it would be larger than the %s that these rules let "
                       "be sized; better ground, a structure of its own, or ",
-                      kent_say(units, KENT_VOLUME, rules->largest_volume).s);
+                      kent_said_of(KENT_VOLUME, units, rules->largest_volume).s);
         break;
     case KENT_FAULT_FACE:
         refuse_face(w, h, t);
@@ -174,7 +175,7 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
 
     if (h->chosen == KENT_NO_RESTRAINT) {
         kent_text_add(&t, "restraint \"none\" is asked for: nothing holds %s",
-                      kent_say(w->m->units, KENT_FORCE, h->design_thrust).s);
+                      kent_said_of(KENT_FORCE, w->m->units, h->design_thrust).s);
     } else if (joints && !h->held && soft) {
         refuse_soil(w, &t);
     } else if (joints && !h->held && h->leg_count == 0 && w->lack == 0) {

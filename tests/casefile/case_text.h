@@ -67,7 +67,8 @@ static inline kent_status read_bytes(const kent_catalogue *catalogue, const char
     *complaints = (kent_complaints){0};
     *out = NULL;
     write_bytes(path, bytes, size);
-    const kent_status status = kent_case_read(path, catalogue, out, complaints, &err);
+    const kent_status status =
+        kent_case_read(path, catalogue, NULL, out, complaints, &err);
     (void)unlink(path);
     return status;
 }

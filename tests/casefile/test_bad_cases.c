@@ -12,7 +12,7 @@ static void messages_of(const kent_catalogue *catalogue, const char *name,
     kent_error err = {0};
     kent_model *model = NULL;
     const kent_status status =
-        kent_case_read(name, catalogue, &model, &complaints, &err);
+        kent_case_read(name, catalogue, NULL, &model, &complaints, &err);
     if (status != KENT_E_INPUT) {
         kent_text_add(out, "%s: %s\n", name, kent_status_text(status));
     }

@@ -15,7 +15,7 @@ static int read_the_case(void *context)
     kent_error err = {0};
     kent_model *m = NULL;
     const kent_status status =
-        kent_case_read(r->path, r->catalogue, &m, &complaints, &err);
+        kent_case_read(r->path, r->catalogue, NULL, &m, &complaints, &err);
     if (status == KENT_OK) {
         assert_non_null(m);
         kent_model_free(m);

@@ -83,6 +83,27 @@ static void a_paragraph_breaks_at_blanks_under_its_lead(void **state)
     kent_text_clear(&out);
 }
 
+static void a_number_keeps_the_unit_behind_it(void **state)
+{
+    (void)state;
+    kent_text out = {0};
+    kent_table_paragraph(&out, 24, "",
+                         "highest 14.90 bar at VC (7.5 s), lowest 0.42 bar");
+    assert_string_equal(kent_text_of(&out), "highest 14.90 bar at VC\n"
+                                            "(7.5 s), lowest 0.42 bar\n");
+    kent_text_reset(&out);
+    kent_table_paragraph(&out, 23, "",
+                         "highest 14.90 bar at VC (7.5 s), lowest 0.42 bar");
+    assert_string_equal(kent_text_of(&out), "highest 14.90 bar at VC\n"
+                                            "(7.5 s), lowest\n"
+                                            "0.42 bar\n");
+    kent_text_reset(&out);
+    kent_table_paragraph(&out, 20, "",
+                         "1 2 3 4 5 6 7 8 9 10 11 12"); /* nothing better */
+    assert_string_equal(kent_text_of(&out), "1 2 3 4 5 6 7 8 9 10\n11 12\n");
+    kent_text_clear(&out);
+}
+
 static void a_word_longer_than_the_line_is_broken_not_lost(void **state)
 {
     (void)state;
@@ -100,6 +121,7 @@ int main(void)
         cmocka_unit_test(numbers_are_never_cut),
         cmocka_unit_test(a_control_character_cannot_break_a_line),
         cmocka_unit_test(a_paragraph_breaks_at_blanks_under_its_lead),
+        cmocka_unit_test(a_number_keeps_the_unit_behind_it),
         cmocka_unit_test(a_word_longer_than_the_line_is_broken_not_lost),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
