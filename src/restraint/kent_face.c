@@ -31,7 +31,7 @@ bool kent_face_choose(const kent_rules *rules, double area, double limit,
     double best = INFINITY;
 
     for (long k = first > 0 ? first : 1; k <= last; k++) {
-        const double height = (double)k * step;
+        const double height = kent_side_of((double)k, step);
         const double width = face_width(rules, area, height);
         if (width < 0.0) continue;
         if (width * height > best * (1.0 + TIE)) continue;

@@ -2,6 +2,9 @@
 #include "kent_check.h"
 #include "kent_restraint.h"
 
+#include <stdio.h>
+#include <stdlib.h>
+
 static const double PI = 3.14159265358979323846;
 static const double DEGREE = 3.14159265358979323846 / 180.0; /* rad */
 static const double FOOT = 0.3048;                           /* m */
@@ -208,9 +211,25 @@ static void under_water_a_gravity_block_grows_by_the_water_s_weight(void **state
     assert_close(wet / dry, 24.0 / (24.0 - 9.81), 1e-14);
 }
 
+/* As a person would write them in a file: 14 steps of 0.05 m are 0.7 m. */
+static void sides_are_exact_decimals(void **state)
+{
+    (void)state;
+    for (int k = 6; k <= 60; k++) {
+        char written[16];
+        kent_face face = {0};
+        const double side = k / 20.0; /* nearest to the decimal */
+        (void)snprintf(written, sizeof written, "%.2f", side);
+        assert_true(kent_face_choose(&RULES, side * side, side, &face));
+        assert_true(face.height == strtod(written, NULL));
+        assert_true(face.width == strtod(written, NULL));
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(sides_are_exact_decimals),
         cmocka_unit_test(
             the_ten_inch_right_angle_bend_of_moser_needs_13_68_square_feet),
         cmocka_unit_test(areas_of_the_chula_vista_sheet_follow_from_its_thrusts),
