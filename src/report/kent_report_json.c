@@ -119,8 +119,10 @@ static void append(kent_object *list, json_t *value)
     if (json_array_append_new(list->json, value) != 0) list->ok = false;
 }
 
+/* [x, y, z]; null where it is not known. */
 static json_t *vector(kent_vec3 v)
 {
+    if (!isfinite(kent_vec3_length(v))) return json_null();
     kent_object list = list_new();
     append(&list, real(v.x));
     append(&list, real(v.y));
@@ -366,6 +368,7 @@ static void set_governing(kent_object *o, const kent_results *r, size_t index)
     const bool network = m->fittings[index].point >= 0;
     const kent_vec3 thrust = at ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
     set(o, "load_case", c ? words(c->name) : json_null());
+    set(o, "sense", c ? words(kent_shown_sense(h->sense)) : json_null());
     set(o, "state", network && m->span_count > 0 ? words(r->steady->id) : json_null());
     set(o, "scenario",
         c && c->scenario >= 0 ? words(m->scenarios[c->scenario].id) : json_null());
@@ -380,6 +383,13 @@ static void set_governing(kent_object *o, const kent_results *r, size_t index)
     set(o, "factor_reached", real(h->factor_reached));
 }
 
+/* The pipe that a fitting's station counts along, by its id in the case. */
+static json_t *pipe_of(const kent_model *m, const kent_fitting *f)
+{
+    const int span = f->port_count > 0 ? m->ports[f->port_first].span : -1;
+    return span >= 0 ? words(m->pipes[m->spans[span].pipe].id) : json_null();
+}
+
 static json_t *fitting_of(const kent_results *r, size_t index)
 {
     const kent_model *m = r->model;
@@ -390,6 +400,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object o = object_new();
     set(&o, "id", words(f->id));
     set(&o, "at", f->point >= 0 ? words(m->points[f->point].id) : json_null());
+    set(&o, "pipe", pipe_of(m, f));
     set(&o, "type", words(kent_fitting_type_word(f->type)));
     set(&o, "angle_deg", real(f->angle * DEGREES));
     set(&o, "station_m", real(f->station));

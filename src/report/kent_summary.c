@@ -185,6 +185,11 @@ static void load_case(const kent_row *r, kent_text *out)
     if (r->governing) kent_text_add(out, "%s", r->governing->name);
 }
 
+static void sense(const kent_row *r, kent_text *out)
+{
+    if (r->governing) kent_text_add(out, "%s", kent_shown_sense(r->holding->sense));
+}
+
 static void scenario_id(const kent_results *r, int scenario, kent_text *out)
 {
     if (scenario < 0) return;
@@ -300,6 +305,7 @@ static const kent_summary_column COLUMNS[] = {
     {"factor reached", reached, NULL, KENT_RATIO, NARROW},
     {"load over resistance", used, NULL, KENT_RATIO, NARROW},
     {"factor asked", asked, NULL, KENT_RATIO, 0},
+    {"sense", NULL, sense, KENT_RATIO, 0},
     {"factored thrust", design, NULL, KENT_FORCE, 0},
     {"thrust east", thrust_x, NULL, KENT_FORCE, 0},
     {"thrust north", thrust_y, NULL, KENT_FORCE, 0},

@@ -129,6 +129,8 @@ class App(unittest.TestCase):
         r = self.call("explain", "main.cfg", "PI2")
         self.assertEqual(r.returncode, 2)
         self.assertIn("did you mean 'PI1'", r.stderr)
+        r = self.call("explain", "main.cfg", "pi1")
+        self.assertIn("did you mean 'PI1'", r.stderr)
         r = self.call("explain", "main.cfg", "somewhere-else")
         self.assertIn("PI1, E", r.stderr)
         self.assertEqual(self.left(), set())
@@ -190,6 +192,47 @@ class App(unittest.TestCase):
         self.assertEqual(r.returncode, 0)
         self.assertIn("psi", r.stdout)
         self.assertNotIn(" bar", r.stdout)
+
+    def test_the_units_chosen_hold_for_every_word(self):
+        soft = PEAT.replace(
+            '  { id = "E"; x', '  { id = "M"; x = "400 m"; y = "100 m"; z = "35 m"; soil = "till"; },\n'
+            '  { id = "E"; x').replace('"PI1", "E"', '"PI1", "M", "E"').replace(
+            'joint = "push-on"; } );', 'joint = "push-on"; pressure_rating = "5 bar"; } );')
+        (self.dir / "main.cfg").write_text(soft)
+        metric = re.compile(r"[0-9] (bar|kPa|GPa|k?N|mm|m|m²|m³|m2|m3|L/s|m/s)\b")
+        for args in (["run", "main.cfg", "--no-files"], ["check", "main.cfg"],
+                     ["explain", "main.cfg", "PI1"]):
+            with self.subTest(args=args):
+                r = self.call(*args, "--units", "US")
+                self.assertEqual(r.returncode, 0, r.stderr)
+                # what a catalogue's source says is quoted as it stands
+                text = re.sub(r"nominal wall = minimum \+ 1.3\s+mm", "", r.stdout)
+                self.assertEqual(metric.findall(text), [])
+        r = self.call("run", "main.cfg", "--no-files", "--units", "US")
+        self.assertIn("psi reached", r.stdout)
+        self.assertRegex(r.stdout, r"carry\s+the\s+restraint\s+\d+ ft\s+towards")
+
+    def test_cautions_of_the_case_stand_in_every_form(self):
+        (self.dir / "main.cfg").write_text(CASE.replace(
+            'joint = "push-on"; } );', 'joint = "push-on"; pressure_rating = "5 bar"; } );'))
+        said = "pipe A: "
+        for args in (["run", "main.cfg", "--no-files"], ["explain", "main.cfg", "PI1"],
+                     ["run", "main.cfg", "--no-files", "--format", "json"]):
+            self.assertIn(said, self.call(*args).stdout)
+        csv_form = ["run", "main.cfg", "--no-files", "--format", "csv"]
+        self.assertIn(said, self.call(*csv_form).stderr)
+        self.assertEqual(self.call(*csv_form, "--quiet").stderr, "")
+
+    def test_a_fitting_says_its_pipe_and_what_part_governs(self):
+        data = json.loads(self.call("run", "main.cfg", "--no-files", "--format=json").stdout)
+        for fitting in data["fittings"]:
+            self.assertEqual(fitting["pipe"], "A")
+            self.assertEqual(fitting["sense"], "sideways")
+            sideways = fitting["safety_factor"] * fitting["horizontal_N"]
+            self.assertAlmostEqual(fitting["design_thrust_N"] / sideways, 1.0, 9)
+            block = fitting["block"]
+            for side in ("width_m", "height_m", "thickness_m"):
+                self.assertEqual(block[side], round(block[side], 2))
 
     def test_decimal_points_stay_points_in_every_locale(self):
         known = subprocess.run(["locale", "-a"], stdout=subprocess.PIPE, encoding="utf-8")
