@@ -80,6 +80,40 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
     }
 }
 
+/* N: how much of an instant's sideways thrust goes against this one. */
+static double against(const kent_instant *at, kent_vec3 thrust)
+{
+    if (!at->set) return 0.0;
+    const kent_vec3 t = kent_instant_lasting(at);
+    return -(t.x * thrust.x + t.y * thrust.y) / kent_thrust_horizontal(thrust);
+}
+
+/* A face bears one way. Suction, or pressure where suction governs, pulls the other. */
+static void caution_reversal(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_load_case *governs = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
+    const kent_vec3 thrust = kent_instant_lasting(&governs->worst[KENT_SIDEWAYS]);
+    const kent_load_case *worst = NULL;
+    double pull = KENT_HOLDING_LEAST;
+
+    for (size_t i = 0; i < w->loads->count; i++) {
+        const kent_load_case *c = &w->loads->cases[i];
+        const kent_instant *at[] = {&c->lowest, &c->highest, &c->worst[KENT_SIDEWAYS]};
+        for (size_t k = 0; k < sizeof at / sizeof at[0]; k++) {
+            if (!(against(at[k], thrust) >= pull)) continue;
+            pull = against(at[k], thrust);
+            worst = c;
+        }
+    }
+    if (!worst) return;
+    kent_notes_add(
+        &h->cautions,
+        "'%s' also pulls the other way, with %s sideways before any factor: "
+        "the face does not bear that way, so tie the fitting to a block that "
+        "holds it",
+        worst->name, kent_said_of(KENT_FORCE, w->m->units, pull).s);
+}
+
 static void caution_block(const kent_holding_work *w, kent_holding *h)
 {
     const kent_system units = w->m->units;
@@ -87,10 +121,12 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
 
     if (b->type == KENT_BLOCK_NONE) return;
     if (b->type == KENT_BLOCK_BEARING || b->has_face) caution_bearing(w, h);
-    if (w->site.hole > 0.0 || h->chosen == KENT_ANCHOR_BLOCK) {
+    if (w->site.hole > 0.0) {
         kent_notes_add(&h->cautions,
                        "the thrust runs along a trench or comes from either side: both "
                        "faces must reach undisturbed ground, not backfill");
+    } else if (w->demand.load[KENT_SIDEWAYS] > 0.0) {
+        caution_reversal(w, h);
     }
     if (w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions,

@@ -122,6 +122,7 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
     const kent_model *m = r->model;
     const kent_slot *slot = &r->slots[scenario];
     const kent_seen *seen = &slot->seen[fitting];
+    const kent_fitting *f = &m->fittings[fitting];
     kent_load_case *c =
         loads_add(m, loads, scenario_kind(&m->scenarios[scenario]), (int)scenario);
 
@@ -129,10 +130,11 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
     if (seen->best[KENT_RESULTANT] < 0.0) return; /* not one instant was taken */
     for (int k = 0; k < KENT_SENSES; k++) {
         if (!(seen->best[k] > 0.0) && k != KENT_RESULTANT) continue;
-        const kent_instant i =
-            kent_instant_of_frame(m, &m->fittings[fitting], &seen->frame[k]);
+        const kent_instant i = kent_instant_of_frame(m, f, &seen->frame[k]);
         if (kent_instant_has_sense(&i, (kent_sense)k)) c->worst[k] = i;
     }
+    c->lowest = kent_instant_of_frame(m, f, &seen->frame_lowest);
+    c->highest = kent_instant_of_frame(m, f, &seen->frame_highest);
     c->above_90_percent = kent_seen_above_90_percent(seen, slot->step);
 }
 

@@ -36,6 +36,8 @@ typedef struct kent_load_case {
     size_t pressed;      /* which port */
     double safety_factor;
     kent_instant worst[KENT_SENSES];
+    kent_instant lowest, highest; /* of a scenario: by the head; what pulls is not
+                                     always the worst, but may pull the other way */
     double above_90_percent; /* s that the resultant stays above 0.9 of its peak; NAN
                                 outside scenarios */
 } kent_load_case;

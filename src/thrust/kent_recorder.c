@@ -199,6 +199,8 @@ void kent_recorder_start(kent_recorder *r, int scenario, double step)
     for (size_t i = 0; i < count && !slot->failed; i++) {
         kent_seen *seen = &slot->seen[i];
         seen->best[KENT_RESULTANT] = -1.0; /* nil counts as a resultant */
+        seen->lowest = INFINITY;
+        seen->highest = -INFINITY;
         for (size_t k = 0; k < KENT_PORTS; k++) {
             seen->highest_head[k] = -INFINITY;
         }
@@ -343,6 +345,34 @@ static void seen_take(const kent_recorder *r, const kent_slot *slot,
     }
 }
 
+/* The instants of the lowest and the highest head. */
+static void seen_take_heads(const kent_recorder *r, const kent_slot *slot,
+                            const kent_trace *trace, size_t index)
+{
+    const kent_fitting *f = &r->model->fittings[index];
+    const size_t widest =
+        kent_port_widest(&r->model->ports[f->port_first], f->port_count);
+    const size_t watch = r->sensors[index].watch[widest];
+    kent_seen *seen = &slot->seen[index];
+    size_t low = trace->count, high = trace->count; /* none */
+
+    for (size_t n = 0; n < trace->count; n++) {
+        const double head = trace->head[n * trace->watch_count + watch];
+        if (head < seen->lowest) {
+            seen->lowest = head;
+            low = n;
+        }
+        if (head > seen->highest) {
+            seen->highest = head;
+            high = n;
+        }
+    }
+    if (low < trace->count) seen_keep(r, slot, trace, index, low, &seen->frame_lowest);
+    if (high < trace->count) {
+        seen_keep(r, slot, trace, index, high, &seen->frame_highest);
+    }
+}
+
 /* The highest head on each side of a valve: what presses on it once it is shut. */
 static void seen_take_faces(const kent_recorder *r, const kent_trace *trace,
                             size_t index, kent_seen *seen)
@@ -392,6 +422,7 @@ void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace)
         const kent_fitting *f = &r->model->fittings[i];
         if (!kent_fitting_in_network(f)) continue;
         seen_take(r, slot, trace, i);
+        seen_take_heads(r, slot, trace, i);
         if (f->type == KENT_VALVE) seen_take_faces(r, trace, i, &slot->seen[i]);
     }
     slot_take_past(r, slot, trace);

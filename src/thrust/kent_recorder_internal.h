@@ -34,6 +34,8 @@ enum { KENT_LEVELS = 512 };
 typedef struct kent_seen {    /* of one fitting in one scenario */
     double best[KENT_SENSES]; /* N2, N2, N, N; -1: none yet, up and down 0 */
     kent_frame frame[KENT_SENSES];
+    double lowest, highest; /* m, head of the widest port */
+    kent_frame frame_lowest, frame_highest;
     double highest_head[KENT_PORTS], highest_at[KENT_PORTS]; /* m, s; in-line valves */
     unsigned long long top;                                  /* highest level met */
     unsigned

@@ -149,6 +149,52 @@ static void the_force_of_changing_flow_never_governs(void **state)
     finish(&b, r);
 }
 
+/* A face bears outwards alone; what suction pulls inwards is left to the reader, with
+ * its size. */
+static void a_pull_the_other_way_is_said(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6},
+                                           {"shut", KENT_CASE_OCCASIONAL, 1.5, 0.5e6}};
+    for (int sucked = 0; sucked <= 1; sucked++) {
+        kent_build b = main_of_five();
+        (void)kent_build_scenario(&b, "shut", 60.0);
+        kent_build_derive(&b);
+        kent_loads_result loads = kent_hand_loads(b.model, cases, 2);
+        const int c = kent_build_fitting_of(&b, "C");
+        kent_load_case *shut = &loads.fittings[c].cases[1];
+        shut->lowest = shut->worst[KENT_RESULTANT];
+        if (sucked) { /* -0.08 MPa: 2 x 80 kPa x 0.3019 m2 x sin(11.25 deg) = 9.4 kN */
+            kent_balance *low = &shut->lowest.balance;
+            low->thrust = kent_vec3_scale(-0.16, low->thrust);
+        }
+        kent_restraints *r = NULL;
+        kent_error err = {0};
+        assert_int_equal(kent_restraint_size(b.model, &loads, &r, &err), KENT_OK);
+        const kent_holding *h = &r->fittings[c];
+        assert_true(kent_hand_says(h, "pulls the other way") == (sucked == 1));
+        if (sucked) kent_hand_expect(h, "'shut' also pulls the other way, with 9.4 kN");
+        kent_hand_clear(&loads);
+        finish(&b, r);
+    }
+}
+
+/* The pipe ends there, and so does its trench. */
+static void an_outlet_valve_does_not_push_along_its_trench(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    const int outlet = kent_build_valve(&b, "VE", "E", 0.05, 8.5);
+    b.model->valves[outlet].size = 0.6;
+    b.model->ground.cover = 2.0;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+
+    assert_true(holding_of(&b, r, "E")->held);
+    assert_false(kent_hand_says(holding_of(&b, r, "E"), "along a trench"));
+    finish(&b, r);
+}
+
 static void a_surge_above_the_test_pressure_is_said(void **state)
 {
     (void)state;
@@ -617,6 +663,8 @@ int main(void)
         cmocka_unit_test(of_equal_loads_the_case_listed_first_governs),
         cmocka_unit_test(each_sense_keeps_its_own_governing_case),
         cmocka_unit_test(the_force_of_changing_flow_never_governs),
+        cmocka_unit_test(a_pull_the_other_way_is_said),
+        cmocka_unit_test(an_outlet_valve_does_not_push_along_its_trench),
         cmocka_unit_test(a_surge_above_the_test_pressure_is_said),
         cmocka_unit_test(bearing_that_the_depth_cannot_give_is_doubted),
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),

@@ -348,6 +348,28 @@ static void changing_flow_is_taken_over_a_waves_crossing(void **state)
     assert_close(unsteady_of_a_sudden_stop(0.02).x, RHO * 0.3 / 0.02, 1e-9);
 }
 
+/* The fitting hangs at P1, 500 m along; a fall to -30 m pulls less than 150 m push. */
+static void the_instants_of_lowest_and_highest_head_are_kept(void **state)
+{
+    (void)state;
+    static kent_made t;
+    kent_net n = kent_net_of(a_main());
+    t.count = 0;
+    kent_made_add(&t, &n, 0.0, 100.0, 0.3);
+    kent_made_add(&t, &n, 0.1, 150.0, 0.1);
+    kent_made_add(&t, &n, 0.2, -30.0, -0.2);
+    kent_made_add(&t, &n, 0.3, 90.0, 0.0);
+    kent_made_take(&t, &n, 0, 0.1, 2);
+    kent_net_finish(&n);
+    const kent_load_case *c = kent_net_case(&n, "P1", "first");
+    assert_true(c->lowest.set && c->lowest.time == 0.2);
+    assert_true(c->highest.set && c->highest.time == 0.1);
+    assert_true(c->lowest.pressure < 0.0);
+    assert_true(c->lowest.balance.port[0].flow == 0.2); /* of the same instant */
+    assert_false(kent_net_case(&n, "P1", "steady")->lowest.set);
+    kent_net_clear(&n);
+}
+
 static void changing_flow_never_chooses_the_instant(void **state)
 {
     (void)state;
@@ -384,6 +406,7 @@ int main(void)
         cmocka_unit_test(scenarios_are_kept_apart),
         cmocka_unit_test(a_sense_that_never_occurs_is_not_set),
         cmocka_unit_test(changing_flow_is_taken_over_a_waves_crossing),
+        cmocka_unit_test(the_instants_of_lowest_and_highest_head_are_kept),
         cmocka_unit_test(changing_flow_never_chooses_the_instant),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
