@@ -1,8 +1,26 @@
 #include "kent_complaints.h"
 
+#include "kent_text.h"
+
 #include <stdarg.h>
 #include <stdio.h>
 #include <string.h>
+
+/* A message is one line of UTF-8, whatever words of a file it repeats: control
+ * characters become '?', and a letter cut in two is left out. */
+static void make_plain(char *text)
+{
+    size_t to = 0;
+    for (size_t i = 0, n; text[i] != '\0'; i += n) {
+        const unsigned char c = (unsigned char)text[i];
+        n = kent_text_sequence(text + i);
+        if (n == 1 && (c < 0x20 || c == 0x7F)) text[i] = '?';
+        memmove(text + to, text + i, n);
+        to += n;
+        if (n == 0) n = 1;
+    }
+    text[to] = '\0';
+}
 
 void kent_complain(kent_complaints *c, const char *file, int line, const char *fmt, ...)
 {
@@ -14,6 +32,7 @@ void kent_complain(kent_complaints *c, const char *file, int line, const char *f
         one->line = line;
         (void)vsnprintf(one->what, sizeof one->what, fmt, args);
         va_end(args);
+        make_plain(one->what);
     }
     c->count++;
 }

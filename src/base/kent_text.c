@@ -44,32 +44,35 @@ void kent_text_clear(kent_text *t)
     *t = (kent_text){0};
 }
 
+size_t kent_text_sequence(const char *utf8)
+{
+    const unsigned char *p = (const unsigned char *)utf8;
+    const size_t n = p[0] < 0x80                    ? 1
+                     : p[0] >= 0xC2 && p[0] <= 0xDF ? 2
+                     : p[0] >= 0xE0 && p[0] <= 0xEF ? 3
+                     : p[0] >= 0xF0 && p[0] <= 0xF4 ? 4
+                                                    : 0;
+    for (size_t i = 1; i < n; i++) { /* stops at a NUL */
+        if ((p[i] & 0xC0u) != 0x80u) return 0;
+    }
+    const bool is_other_spelling =
+        (p[0] == 0xE0 && p[1] < 0xA0) || (p[0] == 0xF0 && p[1] < 0x90);
+    const bool is_no_letter = (p[0] == 0xED && p[1] > 0x9F) || /* half of a pair */
+                              (p[0] == 0xF4 && p[1] > 0x8F);   /* above U+10FFFF */
+    return is_other_spelling || is_no_letter ? 0 : n;
+}
+
 /* The code point that starts at *s; *s moves behind it. A byte that starts nothing
  * valid stands for itself. */
 static unsigned long next_code_point(const unsigned char **s)
 {
     const unsigned char *p = *s;
-    unsigned long point = p[0];
-    int follow = 0;
-
-    if (p[0] >= 0xF0 && p[0] < 0xF8) {
-        follow = 3;
-        point = p[0] & 0x07u;
-    } else if (p[0] >= 0xE0 && p[0] < 0xF0) {
-        follow = 2;
-        point = p[0] & 0x0Fu;
-    } else if (p[0] >= 0xC0 && p[0] < 0xE0) {
-        follow = 1;
-        point = p[0] & 0x1Fu;
-    }
-    for (int i = 1; i <= follow; i++) {
-        if ((p[i] & 0xC0u) != 0x80u) { /* cut short; also stops at the final NUL */
-            *s = p + 1;
-            return p[0];
-        }
+    const size_t n = kent_text_sequence((const char *)p);
+    unsigned long point = n > 1 ? p[0] & (0xFFu >> (n + 1)) : p[0];
+    for (size_t i = 1; i < n; i++) {
         point = point << 6 | (p[i] & 0x3Fu);
     }
-    *s = p + 1 + follow;
+    *s = p + (n > 1 ? n : 1);
     return point;
 }
 

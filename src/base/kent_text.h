@@ -18,6 +18,9 @@ const char *kent_text_of(const kent_text *t); /* "" when empty; lives as long as
 void kent_text_reset(kent_text *t);
 void kent_text_clear(kent_text *t);
 
+/* Bytes of the UTF-8 sequence at the start of a text, 1 to 4; 0: it is none. */
+size_t kent_text_sequence(const char *utf8);
+
 /* Columns a UTF-8 text fills on a terminal: code points, combining marks not counted.
  */
 size_t kent_text_columns(const char *utf8);

@@ -36,6 +36,16 @@ static void they_sort_by_file_as_first_met_then_line_then_order(void **state)
     assert_string_equal(c.kept[5].file, "added.cfg");
 }
 
+static void a_message_is_one_line_of_utf8(void **state)
+{
+    (void)state;
+    kent_complaints c = {0};
+    kent_complain(&c, "a.cfg", 1, "\"%s\"", "K\nb.cfg:1: \x1B[31m\x7F");
+    assert_string_equal(c.kept[0].what, "\"K?b.cfg:1: ?[31m?\"");
+    kent_complain(&c, "a.cfg", 1, "\"%.4s\", %s", "abc\xC3\xA4", "\xC3\xA4");
+    assert_string_equal(c.kept[1].what, "\"abc\", \xC3\xA4");
+}
+
 static void an_empty_list_sorts(void **state)
 {
     (void)state;
@@ -49,6 +59,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(all_are_counted_and_twenty_kept),
         cmocka_unit_test(they_sort_by_file_as_first_met_then_line_then_order),
+        cmocka_unit_test(a_message_is_one_line_of_utf8),
         cmocka_unit_test(an_empty_list_sorts),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -67,6 +67,37 @@ static void columns_count_code_points_but_no_combining_marks(void **state)
     assert_int_equal(kent_text_columns("ab\xC3"), 3);                /* cut short */
 }
 
+/* The table of well-formed sequences of RFC 3629, section 4. */
+static void a_sequence_is_one_code_point_well_formed(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *text;
+        size_t bytes;
+    } ROWS[] = {
+        {"", 1},
+        {"a", 1},
+        {"\x80", 0},
+        {"\xC1\xBF", 0}, /* another spelling of a shorter one */
+        {"\xC2\x80", 2},
+        {"\xDF\xBF", 2},
+        {"\xE0\x9F\xBF", 0},
+        {"\xE0\xA0\x80", 3},
+        {"\xED\x9F\xBF", 3},
+        {"\xED\xA0\x80", 0}, /* half of a pair */
+        {"\xEF\xBF\xBF", 3},
+        {"\xF0\x8F\xBF\xBF", 0},
+        {"\xF0\x90\x80\x80", 4},
+        {"\xF4\x8F\xBF\xBF", 4},
+        {"\xF4\x90\x80\x80", 0},
+        {"\xF5\x80\x80\x80", 0},
+        {"\xE2\x82", 0}, /* cut short */
+    };
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        assert_int_equal(kent_text_sequence(ROWS[i].text), ROWS[i].bytes);
+    }
+}
+
 static void distance_is_the_number_of_edits(void **state)
 {
     (void)state;
@@ -87,6 +118,7 @@ int main(void)
         cmocka_unit_test(a_long_text_is_whole),
         cmocka_unit_test(a_failed_allocation_is_remembered),
         cmocka_unit_test(columns_count_code_points_but_no_combining_marks),
+        cmocka_unit_test(a_sequence_is_one_code_point_well_formed),
         cmocka_unit_test(distance_is_the_number_of_edits),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
