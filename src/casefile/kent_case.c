@@ -1,4 +1,5 @@
 #include "kent_case_internal.h"
+#include "kent_said.h"
 
 #include <assert.h>
 #include <math.h>
@@ -20,10 +21,10 @@ void kent_fill_assume_value(kent_filling *f, const char *what, double si,
                             kent_kind kind, const char *why)
 {
     char value[64];
-    const kent_display d = kent_units_display(kind, f->model->units);
+    const kent_said unit = kent_said_unit(kind, f->model->units);
     (void)snprintf(value, sizeof value, "%.5g%s%s",
-                   kent_units_shown(kind, f->model->units, si), d.unit[0] ? " " : "",
-                   d.unit);
+                   kent_units_shown(kind, f->model->units, si), unit.s[0] ? " " : "",
+                   unit.s);
     kent_fill_assume(f, what, value, why);
 }
 
@@ -204,7 +205,7 @@ static void fill_rules(kent_filling *f)
     }
     if (set < 0 || (size_t)set >= f->catalogue->rule_count) {
         kent_complain(
-            f->reader.complaints, kent_tree_file(f->reader.tree, 0), 0,
+            f->reader.complaints, kent_tree_file(f->reader.tree, 0), 1,
             "the catalogue has no set of rules \"%s\"; name one in design_rules",
             USUAL);
         return;
@@ -331,7 +332,7 @@ static void fill_all(kent_filling *f, const char *path)
     if (r->complaints->count == 0 && f->model->pipe_count == 0 &&
         f->model->note_count == 0) {
         kent_complain(
-            r->complaints, kent_tree_file(r->tree, 0), 0,
+            r->complaints, kent_tree_file(r->tree, 0), 1,
             "the case has nothing to work on; it needs pipes, or fittings with "
             "ports");
     }

@@ -190,12 +190,37 @@ static void text(kent_reader *r, kent_record *record, const kent_key *key,
     }
 }
 
+/* Whether it holds a space or mark of Unicode that nobody sees: two ids that look the
+ * same would differ. */
+static bool has_unseen(const char *text)
+{
+    static const struct {
+        const char *start;
+        unsigned char from, to; /* of the byte after it */
+    } UNSEEN[] = {
+        {"\xC2", 0x80, 0xA0},     /* controls, no-break space */
+        {"\xE2\x80", 0x80, 0x8F}, /* spaces, joiners, direction */
+        {"\xE2\x80", 0xA8, 0xAF}, /* line ends, direction */
+        {"\xE2\x81", 0x9F, 0xAF}, /* more of these */
+        {"\xE3\x80", 0x80, 0x80}, /* wide space */
+        {"\xEF\xBB", 0xBF, 0xBF}, /* no-break of no width */
+    };
+    for (size_t i = 0; i < sizeof UNSEEN / sizeof UNSEEN[0]; i++) {
+        const size_t n = strlen(UNSEEN[i].start);
+        for (const char *p = text; (p = strstr(p, UNSEEN[i].start)) != NULL; p += n) {
+            const unsigned char next = (unsigned char)p[n];
+            if (next >= UNSEEN[i].from && next <= UNSEEN[i].to) return true;
+        }
+    }
+    return false;
+}
+
 /* Ids become parts of file names and of column headings. */
 static bool id_is_usable(const char *id)
 {
     const size_t length = strlen(id);
     return length > 0 && length < KENT_ID && id[0] != '.' && !has_control(id) &&
-           strcspn(id, " /\\\"'`,;:*?<>|$") == length;
+           !has_unseen(id) && strcspn(id, " /\\\"'`,;:*?<>|$") == length;
 }
 
 static void id(kent_reader *r, kent_record *record, const kent_key *key, kent_field *f)
@@ -585,7 +610,7 @@ double kent_record_item(kent_reader *r, kent_record *record, const kent_twig *it
 void kent_reader_shelve(kent_reader *r, kent_shelf shelf, const char *id, int index,
                         kent_place place)
 {
-    if (!id) return; /* refused already */
+    if (!id || id[0] == '\0') return; /* refused already */
     if (kent_directory_add(&r->shelves[shelf], id, index, place) != 0) r->failed = true;
 }
 

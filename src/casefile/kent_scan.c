@@ -7,6 +7,7 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/stat.h>
 
 enum {
     SIZE_MOST = 64 * 1024 * 1024, /* bytes of all files together */
@@ -18,12 +19,13 @@ enum {
 };
 
 typedef enum token {
-    TOKEN_NONE,
+    TOKEN_START, /* of a file, a group or a list; after a ';' */
     TOKEN_NAME,
     TOKEN_EQUALS,
-    TOKEN_VALUE,
-    TOKEN_COMMA,
-    TOKEN_OTHER
+    TOKEN_TEXT,
+    TOKEN_NUMBER,
+    TOKEN_VALUE, /* any other */
+    TOKEN_COMMA
 } token;
 
 typedef struct source {
@@ -48,7 +50,7 @@ typedef struct scanner {
     int depth;
     bracket brackets[NEST_MOST];
     int nest;
-    token last;
+    token last, last_but_one;
     char last_name[LEXEME_SHOWN + 1];
     size_t total; /* bytes read so far */
     bool stopped; /* out of memory, or nothing sensible can follow */
@@ -117,21 +119,6 @@ static kent_status slurp(FILE *file, size_t most, char **bytes, size_t *size,
     return KENT_OK;
 }
 
-/* Length in bytes of the UTF-8 sequence at p; 0: not one. p is NUL-terminated. */
-static size_t utf8_length(const unsigned char *p)
-{
-    if (p[0] < 0x80) return 1;
-    const size_t n = p[0] >= 0xF0 && p[0] <= 0xF4 ? 4
-                     : p[0] >= 0xE0               ? 3
-                     : p[0] >= 0xC2               ? 2
-                                                  : 0;
-    if (p[0] > 0xF4) return 0;
-    for (size_t i = 1; i < n; i++) {
-        if ((p[i] & 0xC0) != 0x80) return 0;
-    }
-    return n;
-}
-
 /* What no line of a file may hold. Returns whether lexing makes sense. */
 static bool bytes_are_text(scanner *s)
 {
@@ -156,7 +143,7 @@ static bool bytes_are_text(scanner *s)
                      "the line holds a NUL byte; a case is plain text in UTF-8");
             return false;
         }
-        const size_t n = utf8_length(p + i);
+        const size_t n = kent_text_sequence(src->bytes + i);
         if (n == 0) {
             complain(s, line, "byte 0x%02X is not UTF-8; save the file as UTF-8",
                      (unsigned)p[i]);
@@ -225,7 +212,7 @@ static void push(scanner *s, FILE *file, const char *shown)
     }
     s->stack[s->depth++] = src;
     if (s->total > SIZE_MOST) {
-        complain(s, 0, "the case is larger than %d MB", SIZE_MOST / (1024 * 1024));
+        complain(s, 1, "the case is larger than %d MB", SIZE_MOST / (1024 * 1024));
         s->stopped = true;
     } else if (!bytes_are_text(s)) {
         s->stopped = true;
@@ -262,15 +249,51 @@ static const char *open_word(char open)
     return open == '{' ? "}" : open == '(' ? ")" : "]";
 }
 
-static void see_value(scanner *s)
+static void see(scanner *s, token now)
+{
+    s->last_but_one = s->last;
+    s->last = now;
+}
+
+static bool was_value(const scanner *s)
+{
+    return s->last == TOKEN_TEXT || s->last == TOKEN_NUMBER || s->last == TOKEN_VALUE;
+}
+
+static bool in_list(const scanner *s)
+{
+    return s->nest > 0 && s->brackets[s->nest - 1].open != '{';
+}
+
+/* A name or a '=' that nothing follows. */
+static void complain_unfinished(scanner *s)
 {
     if (s->last == TOKEN_NAME) {
         complain(s, top(s)->line, "'=' is missing after '%s'", s->last_name);
-    } else if (s->last == TOKEN_VALUE && s->nest > 0 &&
-               s->brackets[s->nest - 1].open != '{') {
-        complain(s, top(s)->line, "a ',' is missing before this element of the list");
+    } else if (s->last == TOKEN_EQUALS) {
+        complain(s, top(s)->line, "a value is missing after '%s ='", s->last_name);
     }
-    s->last = TOKEN_VALUE;
+}
+
+/* A value without its name is complained of here: libconfig leaks what it had read. */
+static void see_value(scanner *s, token kind)
+{
+    const int line = top(s)->line;
+    const bool joins =
+        kind == TOKEN_TEXT && s->last == TOKEN_TEXT; /* "a" "b" is "ab" */
+    if (s->last == TOKEN_NAME) {
+        complain_unfinished(s);
+    } else if (in_list(s)) {
+        if (was_value(s)) {
+            complain(s, line, "a ',' is missing before this element of the list");
+        }
+    } else if (kind == TOKEN_NUMBER && s->last == TOKEN_COMMA &&
+               s->last_but_one == TOKEN_NUMBER) {
+        complain(s, line, "a comma stands in a number; decimals have a point, as 1.5");
+    } else if (s->last != TOKEN_EQUALS && !joins) {
+        complain(s, line, "a value stands here without a name; write name = value");
+    }
+    see(s, kind);
 }
 
 static size_t lex_string(scanner *s, const char *p)
@@ -293,7 +316,7 @@ static size_t lex_string(scanner *s, const char *p)
         complain(s, line, "a text is longer than %d bytes", STRING_MOST);
         s->stopped = true;
     }
-    see_value(s);
+    see_value(s, TOKEN_TEXT);
     return n;
 }
 
@@ -365,7 +388,7 @@ static size_t lex_number(scanner *s, const char *p)
         complain(s, line, "%s is out of range of any number", text);
     }
     note_number(s, whole, line);
-    see_value(s);
+    see_value(s, TOKEN_NUMBER);
     return n;
 }
 
@@ -378,8 +401,17 @@ static size_t lex_name(scanner *s, const char *p)
     const int shown = (int)(n < LEXEME_SHOWN ? n : LEXEME_SHOWN);
     const bool truth = (n == 4 && strncasecmp(p, "true", 4) == 0) ||
                        (n == 5 && strncasecmp(p, "false", 5) == 0);
-    const bool inside = s->nest > 0 && s->brackets[s->nest - 1].open != '{';
-    if (inside && !truth && (p[n + strspn(p + n, " \t")] == '=')) {
+    const bool inside = in_list(s);
+    const char next = p[n + strspn(p + n, " \t")];
+    if (s->last == TOKEN_NUMBER && next != '=' && next != ':') {
+        complain(s, top(s)->line,
+                 "'%.*s' follows a number; a value and its unit stand in quotes "
+                 "together, as \"1.4 m\"",
+                 shown, p);
+        see(s, TOKEN_VALUE);
+        return n + strcspn(p + n, ";,)]}#\n"); /* the rest of the unit */
+    }
+    if (inside && !truth && next == '=') {
         const bracket *in = &s->brackets[s->nest - 1];
         complain(s, top(s)->line,
                  "'%.*s =' stands inside the '%c' of line %d, whose '%s' "
@@ -387,17 +419,15 @@ static size_t lex_name(scanner *s, const char *p)
                  shown, p, in->open, in->line, open_word(in->open));
         s->stopped = true;
     } else if (truth && (s->last == TOKEN_EQUALS || inside)) {
-        see_value(s);
+        see_value(s, TOKEN_VALUE);
     } else if (s->last == TOKEN_EQUALS || inside) {
         complain(s, top(s)->line, "'%.*s' is text and must stand in quotes: \"%.*s\"",
                  shown, p, shown, p);
-        s->last = TOKEN_VALUE;
+        see(s, TOKEN_VALUE);
     } else {
-        if (s->last == TOKEN_NAME) {
-            complain(s, top(s)->line, "'=' is missing after '%s'", s->last_name);
-        }
+        complain_unfinished(s);
         (void)snprintf(s->last_name, sizeof s->last_name, "%.*s", shown, p);
-        s->last = TOKEN_NAME;
+        see(s, TOKEN_NAME);
     }
     return n;
 }
@@ -411,7 +441,7 @@ static void open_bracket(scanner *s, char open)
         s->stopped = true;
         return;
     }
-    see_value(s);
+    see_value(s, TOKEN_VALUE);
     if (s->nest > 0 && s->brackets[s->nest - 1].open == '[') {
         complain(s, src->line,
                  "'%c' stands in [ ], which holds numbers and texts only; a "
@@ -419,7 +449,7 @@ static void open_bracket(scanner *s, char open)
                  open);
         s->stopped = true;
     }
-    s->last = TOKEN_OTHER;
+    see(s, TOKEN_START);
     s->brackets[s->nest++] =
         (bracket){.open = open, .file = src->file, .line = src->line};
 }
@@ -432,6 +462,7 @@ static void close_bracket(scanner *s, char close)
         s->stopped = true;
         return;
     }
+    complain_unfinished(s);
     const bracket *in = &s->brackets[--s->nest];
     if (*open_word(in->open) != close) {
         complain(s, line, "'%c' stands where '%s' should close the '%c' of line %d",
@@ -441,7 +472,25 @@ static void close_bracket(scanner *s, char close)
         complain(s, line, "a comma before '%c' leaves an empty place; take it out",
                  close);
     }
-    s->last = TOKEN_VALUE;
+    see(s, TOKEN_VALUE);
+}
+
+/* The ',' or ';' at p. */
+static void end_value(scanner *s, const char *p)
+{
+    const int line = top(s)->line;
+    const char next = p[1 + strspn(p + 1, " \t\n")];
+    complain_unfinished(s);
+    if (in_list(s) && *p == ';' && (next == '"' || next == '{' || is_digit(next))) {
+        const bracket *in = &s->brackets[s->nest - 1];
+        complain(s, line,
+                 "';' stands inside the '%c' of line %d; a ',' separates the elements "
+                 "of a list",
+                 in->open, in->line);
+    } else if (s->last == TOKEN_START || s->last == TOKEN_COMMA) {
+        complain(s, line, "'%c' follows nothing; take it out", *p);
+    }
+    see(s, *p == ',' ? TOKEN_COMMA : TOKEN_START);
 }
 
 static size_t lex_sign(scanner *s, const char *p)
@@ -459,16 +508,17 @@ static size_t lex_sign(scanner *s, const char *p)
         return 1;
     case '=':
     case ':':
-        s->last = TOKEN_EQUALS;
+        if (s->last != TOKEN_NAME) {
+            complain(s, top(s)->line, "'%c' stands here without a name before it", *p);
+        }
+        see(s, TOKEN_EQUALS);
         return 1;
     case ',':
-        s->last = TOKEN_COMMA;
-        return 1;
     case ';':
-        s->last = TOKEN_OTHER;
+        end_value(s, p);
         return 1;
     default: {
-        const size_t n = utf8_length((const unsigned char *)p);
+        const size_t n = kent_text_sequence(p);
         complain(s, top(s)->line,
                  "'%.*s' cannot stand here; texts stand between straight quotes \" \"",
                  (int)n, p);
@@ -484,6 +534,7 @@ static void include(scanner *s, const char *name, int line)
 {
     char path[1024];
     FILE *file = NULL;
+    struct stat kind = {0};
     if (name[0] == '/' || name[0] == '\0' || strstr(name, "..") || strchr(name, '\\')) {
         complain(s, line,
                  "@include \"%.60s\" leaves the folder of the case; only files of that "
@@ -502,6 +553,10 @@ static void include(scanner *s, const char *name, int line)
         snprintf(path, sizeof path, "%.*s%s", (int)s->folder_length, s->path, name);
     if (n < 0 || (size_t)n >= sizeof path) {
         complain(s, line, "@include \"%.60s\": the path is too long", name);
+        return;
+    }
+    if (stat(path, &kind) == 0 && !S_ISREG(kind.st_mode)) {
+        complain(s, line, "@include \"%.60s\" is not a file", name);
         return;
     }
     file = fopen(path, "rb");
@@ -646,7 +701,7 @@ kent_status kent_scan_read(const char *path, kent_scan *out,
     } else if (complaints->count > before) {
         status = KENT_E_INPUT;
     } else if (!out->text) {
-        kent_complain(complaints, out->files[0], 0, "the file is empty");
+        kent_complain(complaints, out->files[0], 1, "the file is empty");
         status = KENT_E_INPUT;
     }
 done:

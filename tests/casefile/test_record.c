@@ -332,6 +332,16 @@ static void names_that_cannot_stand_in_files_are_refused(void **state)
     assert_true(refused(&r, k, "\"..\"", "cannot be a name"));
     assert_true(refused(&r, k, "\"a,b\"", "cannot be a name"));
     assert_true(refused(&r, k, "\"a\\nb\"", "cannot be a name"));
+    assert_true(refused(&r, k, "\"a\xC2\xA0\"", "cannot be a name"));
+    assert_true(refused(&r, k,
+                        "\"a\xE2\x80\xAE"
+                        "b\"",
+                        "cannot be a name"));
+    assert_true(refused(&r, k,
+                        "\"\xEF\xBB\xBF"
+                        "b\"",
+                        "cannot be a name"));
+    assert_false(refused(&r, k, "\"K\xC3\xA4rn\"", "cannot be a name"));
     assert_true(refused(&r, k, "\"012345678901234567890123456789012345678901234567\"",
                         "cannot be a name"));
     reader_end(&r);

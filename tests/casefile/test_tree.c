@@ -87,7 +87,8 @@ static void what_libconfig_reads_wrongly_is_refused_with_reason(void **state)
     refuses("a = ( 1, );\n", "a comma before ')'", 1);
     refuses("a = 1;\na = 2;\n", "'a' is given twice", 2);
     refuses("a = [ 1, \"x\" ];\n", "mixes kinds of values", 1);
-    refuses("a = 1.4 m;\n", "cannot be read", 1);
+    refuses("a = 1.4 m;\n", "'m' follows a number", 1);
+    refuses("b = 1;\na = 3 L/s;\n", "'L' follows a number", 2);
     refuses("a = 1.4m;\n", "stands in quotes", 1);
     refuses("a = \xE2\x80\x9Cx\xE2\x80\x9D;\n", "straight quotes", 1);
     refuses("a = 1;\n}\n", "'}' closes nothing", 2);
@@ -98,6 +99,38 @@ static void what_libconfig_reads_wrongly_is_refused_with_reason(void **state)
     refuses("@include x\n", "needs a file name in quotes", 1);
     refuses("@include \"/etc/passwd\"\n", "leaves the folder", 1);
     refuses("@include \"a/../../b\"\n", "leaves the folder", 1);
+}
+
+static void what_lacks_a_name_a_sign_or_a_value_is_said_so(void **state)
+{
+    (void)state;
+    refuses("\"x\";\n", "a value stands here without a name", 1);
+    refuses("a = ( { \"x\"; b = 1; } );\n", "a value stands here without a name", 1);
+    refuses("a = 1,5;\n", "decimals have a point", 1);
+    refuses("a = ;\n", "a value is missing after 'a ='", 1);
+    refuses("a = { b = };\n", "a value is missing after 'b ='", 1);
+    refuses("a;\n", "'=' is missing after 'a'", 1);
+    refuses("a = = 1;\n", "'=' stands here without a name", 1);
+    refuses("a = ( , 1 );\n", "',' follows nothing", 1);
+    refuses("a = 1;;\n", "';' follows nothing", 1);
+    refuses("a = ( 1; 2 );\n", "a ',' separates the elements of a list", 1);
+}
+
+static void texts_side_by_side_are_one(void **state)
+{
+    (void)state;
+    kent_tree *tree = NULL;
+    kent_complaints c;
+    assert_int_equal(read_text("a = \"x\"\n \"y\"\nb = 1\n", &tree, &c), KENT_OK);
+    const kent_twig *a = kent_twig_member(kent_tree_root(tree), "a");
+    assert_string_equal(kent_twig_text(a), "xy");
+    kent_tree_free(tree);
+}
+
+static void only_files_are_included(void **state)
+{
+    (void)state;
+    refuses("@include \".\"\n", "is not a file", 1);
 }
 
 static void lengths_and_depths_have_limits(void **state)
@@ -173,6 +206,9 @@ int main(void)
         cmocka_unit_test(carriage_returns_change_neither_values_nor_lines),
         cmocka_unit_test(the_checksum_is_fnv_1a_of_the_bytes),
         cmocka_unit_test(what_libconfig_reads_wrongly_is_refused_with_reason),
+        cmocka_unit_test(what_lacks_a_name_a_sign_or_a_value_is_said_so),
+        cmocka_unit_test(texts_side_by_side_are_one),
+        cmocka_unit_test(only_files_are_included),
         cmocka_unit_test(lengths_and_depths_have_limits),
         cmocka_unit_test(an_included_file_keeps_its_own_name_and_lines),
         cmocka_unit_test(a_file_that_is_not_there_is_no_input_error),
