@@ -3,6 +3,7 @@
 #include <assert.h>
 #include <stdio.h>
 #include <stdlib.h>
+#include <string.h>
 
 enum { NAMED_POINTS = 5 }; /* of a part cut off, in a complaint */
 
@@ -121,6 +122,36 @@ static void cut_pipe(kent_model *m, kent_layout *l, int index,
     }
 }
 
+static int by_id(const void *a, const void *b)
+{
+    const kent_span *const *x = a;
+    const kent_span *const *y = b;
+    const int order = strcmp((*x)->id, (*y)->id);
+    return order != 0 ? order : ((*x)->pipe > (*y)->pipe) - ((*x)->pipe < (*y)->pipe);
+}
+
+/* A pipe may be called what a span of another one is called. */
+static kent_status check_span_ids(const kent_model *m, kent_complaints *complaints)
+{
+    const kent_span **order = kent_alloc(m->span_count, sizeof *order);
+    if (!order) return KENT_E_NOMEM;
+    for (size_t i = 0; i < m->span_count; i++) {
+        order[i] = &m->spans[i];
+    }
+    if (m->span_count > 0) qsort(order, m->span_count, sizeof *order, by_id);
+    for (size_t i = 1; i < m->span_count; i++) {
+        if (strcmp(order[i - 1]->id, order[i]->id) != 0) continue;
+        const kent_pipe *first = &m->pipes[order[i - 1]->pipe];
+        const kent_pipe *second = &m->pipes[order[i]->pipe];
+        kent_place_complain(m, second->place, complaints,
+                            "pipes \"%s\" and \"%s\" would both have a span called "
+                            "\"%s\"; give one of them another id",
+                            first->id, second->id, order[i]->id);
+    }
+    free(order);
+    return KENT_OK;
+}
+
 /* Ends grouped by node, in the order of spans. */
 static void group_ends(kent_model *m)
 {
@@ -160,7 +191,7 @@ kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *com
         cut_pipe(m, l, (int)i, complaints);
     }
     group_ends(m);
-    return KENT_OK;
+    return check_span_ids(m, complaints);
 }
 
 /* The node across a valve that is at least partly open; -1: none. */
