@@ -224,7 +224,7 @@ const kent_key KENT_KEYS[] = {
              "laying length of one pipe; restrained lengths are rounded up to it"),
     NUMBER("pipe", "loss", WITHIN(0.0, 1e6), "0.0",
            "minor losses spread along it, K on its bore"),
-    QUANTITY("pipe", "pressure_rating", KENT_PRESSURE, BETWEEN(0.0, 1e9), "the class's",
+    QUANTITY("pipe", "pressure_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
              "pressure the pipe is rated for"),
     LATER("pipe", "surge_rating", "pressure rating under surge"),
     LATER("pipe", "test_rating", "pressure rating under test"),
@@ -341,7 +341,7 @@ const kent_key KENT_KEYS[] = {
     QUANTITY("port", "face", KENT_LENGTH, WITHIN(0.0, 100.0), "the fitting's",
              "centre to face"),
 
-    QUANTITY("loads", "test_pressure", KENT_PRESSURE, BETWEEN(0.0, 1e9), "none",
+    QUANTITY("loads", "test_pressure", KENT_PRESSURE, WITHIN(1e3, 1e9), "none",
              "pressure of the site test at test_gauge_at"),
     REF("loads", "test_gauge_at", "point", "none", "point where test pressure is read"),
     QUANTITY("loads", "static_level", KENT_LENGTH, WITHIN(-1000.0, 9000.0),

@@ -443,8 +443,14 @@ static kent_status convert(kent_units *u, const char *text, double number,
 static bool is_absolute_pressure(const char *unit)
 {
     static const char *const NAMES[] = {"psia", "bara", "ata", "PSIA"};
+    static const char *const ENDS[] = {" a", "(a)", " abs", "(abs)"};
+    const size_t length = strlen(unit);
     for (size_t i = 0; i < sizeof NAMES / sizeof NAMES[0]; i++) {
         if (strcmp(unit, NAMES[i]) == 0) return true;
+    }
+    for (size_t i = 0; i < sizeof ENDS / sizeof ENDS[0]; i++) {
+        const size_t n = strlen(ENDS[i]);
+        if (length > n && strcmp(unit + length - n, ENDS[i]) == 0) return true;
     }
     return false;
 }
@@ -463,6 +469,9 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
     }
     own = kent_copy_text(text);
     if (!own) return kent_error_nomem(err);
+    for (char *p = own; (p = strstr(p, "\xC2\xA0")) != NULL;) {
+        memcpy(p, "  ", 2); /* no-break spaces, as pasted from a document */
+    }
     for (size_t n = strlen(own); n > 0 && isspace((unsigned char)own[n - 1]); n--) {
         own[n - 1] = '\0';
     }

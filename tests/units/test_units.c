@@ -156,6 +156,7 @@ static void numbers_may_be_written_as_people_write_them(void **state)
         {"600 mm", KENT_LENGTH, 0.6},
         {"600mm", KENT_LENGTH, 0.6},
         {"  600 mm  ", KENT_LENGTH, 0.6},
+        {"600\xC2\xA0mm", KENT_LENGTH, 0.6}, /* a no-break space */
         {"+0.6 m", KENT_LENGTH, 0.6},
         {"-0.6 m", KENT_LENGTH, -0.6},
         {".6 m", KENT_LENGTH, 0.6},
@@ -242,6 +243,10 @@ static void absolute_pressures_are_refused_by_name(void **state)
     (void)state;
     assert_refused("14.7 psia", KENT_PRESSURE, "'psia' in '14.7 psia' is an absolute");
     assert_refused("14.7 psia", KENT_PRESSURE, "pressures are gauge");
+    assert_refused("10 bar(a)", KENT_PRESSURE, "is an absolute");
+    assert_refused("150 psi a", KENT_PRESSURE, "is an absolute");
+    assert_refused("10 bar abs", KENT_PRESSURE, "is an absolute");
+    assert_refused("10 kPa (abs)", KENT_PRESSURE, "is an absolute");
     assert_refused("1 bara", KENT_PRESSURE, "absolute");
 }
 
