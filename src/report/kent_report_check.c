@@ -131,15 +131,6 @@ static kent_shown wave_form(const kent_pipe *p)
     return s;
 }
 
-/* m/s of a pipe: its spans have it all alike. NAN: no span. */
-static double wave_speed_of(const kent_model *m, size_t pipe)
-{
-    for (size_t i = 0; i < m->span_count; i++) {
-        if (m->spans[i].pipe == (int)pipe) return m->spans[i].wave_speed;
-    }
-    return NAN;
-}
-
 static void print_pipes(const kent_view *v)
 {
     const kent_model *m = v->model;
@@ -160,6 +151,7 @@ static void print_pipes(const kent_view *v)
     };
     kent_table t = {.columns = columns,
                     .column_count = sizeof columns / sizeof columns[0]};
+    const kent_span *span = m->spans; /* the first of its pipe: all have one speed */
     for (size_t i = 0; i < m->pipe_count; i++) {
         const kent_pipe *p = &m->pipes[i];
         const int tenths = v->units == KENT_SI ? 1 : 3; /* mm, in: walls are thin */
@@ -171,11 +163,13 @@ static void print_pipes(const kent_view *v)
                         kent_shown_number(
                             kent_units_shown(KENT_DIAMETER, v->units, p->wall), tenths)
                             .text);
-        kent_table_cell(
-            &t, "%s",
-            kent_shown_number(
-                kent_units_shown(KENT_SPEED, v->units, wave_speed_of(m, i)), 0)
-                .text);
+        while (span->pipe < (int)i) { /* every pipe has a span, in the pipes' order */
+            span++;
+        }
+        kent_table_cell(&t, "%s",
+                        kent_shown_number(
+                            kent_units_shown(KENT_SPEED, v->units, span->wave_speed), 0)
+                            .text);
         word(&t, wave_form(p).text);
         word(&t, kent_friction_word(p->friction));
         word(&t, kent_joint_word(p->joint));
