@@ -1,5 +1,4 @@
 #include "kent_case_internal.h"
-#include "kent_said.h"
 
 #include <assert.h>
 #include <math.h>
@@ -21,10 +20,10 @@ void kent_fill_assume_value(kent_filling *f, const char *what, double si,
                             kent_kind kind, const char *why)
 {
     char value[64];
-    const kent_said unit = kent_said_unit(kind, f->model->units);
+    const kent_display d = kent_units_display(kind, f->model->units);
     (void)snprintf(value, sizeof value, "%.5g%s%s",
-                   kent_units_shown(kind, f->model->units, si), unit.s[0] ? " " : "",
-                   unit.s);
+                   kent_units_shown(kind, f->model->units, si), d.unit[0] ? " " : "",
+                   d.unit);
     kent_fill_assume(f, what, value, why);
 }
 
@@ -186,6 +185,10 @@ static void fill_solver(kent_filling *f)
     s->wave_speed_tolerance =
         kent_record_number_or(&r, "wave_speed_tolerance", s->wave_speed_tolerance);
     s->time_step = kent_record_number(&r, "time_step");
+    if (kent_record_has(&r, "time_step")) {
+        s->place =
+            kent_tree_place(f->reader.tree, kent_record_field(&r, "time_step")->twig);
+    }
     const double reaches = kent_record_number_or(&r, "min_reaches", s->min_reaches);
     const double rows = kent_record_number_or(&r, "history_rows", s->history_rows);
     if (!r.sound) return;
