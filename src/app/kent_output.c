@@ -1,6 +1,5 @@
 #include "kent_output.h"
 
-#include <ctype.h>
 #include <errno.h>
 #include <stdio_ext.h>
 #include <stdlib.h>
@@ -49,23 +48,6 @@ char *kent_output_folder_name(const char *case_path)
     kent_text_add(&out, "%.*s-results", (int)length, name);
     if (out.failed) kent_text_clear(&out);
     return out.s;
-}
-
-/* A scenario's id in a file name: what a file system may object to becomes '_', and
- * then its number keeps two such names apart. */
-static void add_file_name(kent_text *name, const char *what, const char *id,
-                          size_t index)
-{
-    bool changed = false;
-    kent_text_add(name, "%s-", what);
-    for (const char *s = id; *s != '\0'; s++) {
-        const unsigned char c = (unsigned char)*s;
-        const bool plain = isalnum(c) || c >= 0x80 || strchr("-_.+", c);
-        kent_text_add(name, "%c", plain ? *s : '_');
-        changed = changed || !plain;
-    }
-    if (changed) kent_text_add(name, "-%zu", index + 1);
-    kent_text_add(name, ".csv");
 }
 
 /* One file of the folder. */
@@ -127,7 +109,8 @@ kent_status kent_output_fill(const kent_results *r, const kent_report_options *o
         f.scenario = i;
         for (size_t k = 0; !status && k < sizeof EACH / sizeof EACH[0]; k++) {
             kent_text_reset(&name);
-            add_file_name(&name, EACH[k].word, id, i);
+            /* an id has nothing that a file's name could not: the reader sees to it */
+            kent_text_add(&name, "%s-%s.csv", EACH[k].word, id);
             f.write = EACH[k].write;
             status = name.failed ? kent_error_nomem(err)
                                  : write_file(&f, kent_text_of(&name), folder, err);

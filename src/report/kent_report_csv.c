@@ -4,10 +4,10 @@
 
 #include <math.h>
 
-/* A number to ten digits; an empty field where there is none. */
-static void add_number(kent_text *out, double value)
+/* A further field: a number to ten digits, empty where there is none. */
+static void add_field(kent_text *out, double value)
 {
-    if (isfinite(value)) kent_text_add(out, "%.10g", value);
+    kent_text_add(out, isfinite(value) ? ",%.10g" : ",", value);
 }
 
 static void add_history_heading(const kent_results *r, kent_text *out)
@@ -38,16 +38,13 @@ kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
     kent_status status = KENT_OK;
     add_history_heading(r, &out);
     for (size_t row = 0; !status && row < h->rows; row++) {
-        add_number(&out, h->time[row]);
+        kent_text_add(&out, "%.10g", h->time[row]);
         for (size_t w = 0; w < r->history_count; w++) {
             const double z = m->points[r->history_points[w]].at.z;
             const double head = h->head[row * h->watch_count + w];
-            kent_text_add(&out, ",");
-            add_number(&out, head);
-            kent_text_add(&out, ",");
-            add_number(&out, kent_model_pressure(m, head, z));
-            kent_text_add(&out, ",");
-            add_number(&out, h->flow[row * h->watch_count + w]);
+            add_field(&out, head);
+            add_field(&out, kent_model_pressure(m, head, z));
+            add_field(&out, h->flow[row * h->watch_count + w]);
         }
         kent_text_add(&out, "\n");
         status = kent_sink_flush(sink, &out);
@@ -75,8 +72,7 @@ static void add_profile_rows(const kent_results *r, size_t scenario, size_t inde
         };
         kent_summary_field(out, span->id);
         for (size_t c = 0; c < sizeof numbers / sizeof numbers[0]; c++) {
-            kent_text_add(out, ",");
-            add_number(out, numbers[c]);
+            add_field(out, numbers[c]);
         }
         kent_text_add(out, "\n");
     }
