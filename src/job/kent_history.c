@@ -73,8 +73,9 @@ kent_status kent_history_finish(const kent_history_keeper *k, kent_history *out,
     h.flow = kent_alloc(most, (places + 1) * sizeof *h.flow);
     if (!rows || !h.time || !h.head || !h.flow) goto done;
 
-    for (size_t i = 0; i < k->even_count; i++)
+    for (size_t i = 0; i < k->even_count; i++) {
         rows[i] = k->even + i * k->width;
+    }
     for (size_t i = 0; i < extremes; i++) {
         rows[k->even_count + i] = k->extreme + i * k->width;
     }

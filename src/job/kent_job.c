@@ -166,8 +166,9 @@ static unsigned threads_of(const kent_job_options *options)
 
 static void copy_notes(const kent_notes *from, kent_notes *to)
 {
-    for (size_t i = 0; i < from->count; i++)
+    for (size_t i = 0; i < from->count; i++) {
         kent_notes_add(to, "%s", from->text[i]);
+    }
 }
 
 kent_status kent_job_run(const kent_model *m, const kent_job_options *options,

@@ -95,8 +95,9 @@ kent_status kent_scenario_run_march(const kent_scenario_run *run,
         status = kent_error_nomem(err);
         goto done;
     }
-    for (size_t i = 0; i < m->point_count; i++)
+    for (size_t i = 0; i < m->point_count; i++) {
         out->points[i] = nothing_seen();
+    }
     status = kent_marcher_new(m, run->steady, run->grid, run->scenario, v->watches,
                               v->recorder_count + v->count, BLOCK, &march, err);
     if (status) goto done;

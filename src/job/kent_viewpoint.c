@@ -37,18 +37,21 @@ static int valve_at(const kent_model *m, int point)
 /* Marks the points whose history is wanted. */
 static void mark_histories(const kent_model *m, bool *wanted)
 {
-    for (size_t i = 0; i < m->point_count; i++)
+    for (size_t i = 0; i < m->point_count; i++) {
         wanted[i] = m->points[i].record;
+    }
     for (size_t i = 0; i < m->fitting_count; i++) {
         if (m->fittings[i].point >= 0) wanted[m->fittings[i].point] = true;
     }
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         wanted[m->fixed_levels[i].point] = true;
     }
-    for (size_t i = 0; i < m->outflow_count; i++)
+    for (size_t i = 0; i < m->outflow_count; i++) {
         wanted[m->outflows[i].point] = true;
-    for (size_t i = 0; i < m->valve_count; i++)
+    }
+    for (size_t i = 0; i < m->valve_count; i++) {
         wanted[m->valves[i].point] = true;
+    }
 }
 
 /* A valve's own flow is positive from its first node: into the valve at a span's end.
@@ -107,8 +110,9 @@ kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *record
     v->recorder_count = recorder_count;
     if (recorder_count) memcpy(v->watches, own, recorder_count * sizeof *own);
     mark_histories(m, wanted);
-    for (size_t i = 0; i < m->point_count; i++)
+    for (size_t i = 0; i < m->point_count; i++) {
         add_point(v, m, (int)i, wanted[i]);
+    }
     *out = v;
     v = NULL;
     status = KENT_OK;

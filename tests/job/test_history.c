@@ -39,8 +39,9 @@ static void rows_rise_in_time_and_stay_within_what_was_asked(void **state)
     (void)state;
     kent_history h = kept_with_a_spike(500, ROWS);
     assert_true(h.rows >= ROWS - 1 && h.rows <= ROWS + 3);
-    for (size_t i = 1; i < h.rows; i++)
+    for (size_t i = 1; i < h.rows; i++) {
         assert_true(h.time[i] > h.time[i - 1]);
+    }
     kent_history_clear(&h);
 }
 
