@@ -1,5 +1,6 @@
 #include "kent_catalogue_internal.h"
 
+#include <libgen.h>
 #include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -365,7 +366,7 @@ static kent_status read_file(const char *folder, const char *name, kent_units *u
                              kent_catalogue *c, kent_complaints *complaints,
                              kent_error *err)
 {
-    char path[1024];
+    char path[1280];
     kent_tree *tree = NULL;
     kent_reader r = {.units = units, .complaints = complaints};
     (void)snprintf(path, sizeof path, "%s/%s", folder, name);
@@ -382,26 +383,33 @@ done:
     return status;
 }
 
-/* Where config/ is, when nobody says. */
-static const char *usual_folder(void)
+/* Where config/ is, when nobody says. Sought from the running program, so that an
+ * installed tree may be moved, and a program in its build folder never takes the
+ * catalogue of another version. */
+static const char *usual_folder(char *installed, size_t cap)
 {
     const char *folder = getenv("KENTLEDGE_CONFIG");
     if (folder && folder[0] != '\0') return folder;
-    return access(KENT_CONFIG_INSTALL_DIR "/pipes.cfg", R_OK) == 0
-               ? KENT_CONFIG_INSTALL_DIR
-               : KENT_CONFIG_SOURCE_DIR;
+
+    char program[1024];
+    const ssize_t length = readlink("/proc/self/exe", program, sizeof program - 1);
+    if (length <= 0) return KENT_CONFIG_SOURCE_DIR;
+    program[length] = '\0';
+    (void)snprintf(installed, cap, "%s/%s", dirname(program), KENT_CONFIG_FROM_BIN);
+    return access(installed, X_OK) == 0 ? installed : KENT_CONFIG_SOURCE_DIR;
 }
 
 kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
                                 kent_complaints *complaints, kent_error *err)
 {
     const size_t before = complaints->count;
+    char installed[1200];
     kent_reader all = {.complaints = complaints};
     kent_units *units = NULL;
     kent_status status = KENT_OK;
     kent_catalogue *c = kent_alloc(1, sizeof *c);
     if (!c) return kent_error_nomem(err);
-    if (!folder) folder = usual_folder();
+    if (!folder) folder = usual_folder(installed, sizeof installed);
     status = kent_units_new(&units, err);
     if (status != KENT_OK) goto done;
 

@@ -47,8 +47,8 @@ typedef struct kent_catalogue {
     size_t rule_count;
 } kent_catalogue;
 
-/* From the folder; NULL: KENTLEDGE_CONFIG, else the installed share folder, else the
- * source tree it was built from. Complaints as for a case. */
+/* From the folder; NULL: KENTLEDGE_CONFIG, else the share folder beside the installed
+ * program, else the source tree it was built from. Complaints as for a case. */
 kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
                                 kent_complaints *complaints, kent_error *err);
 void kent_catalogue_free(kent_catalogue *c);

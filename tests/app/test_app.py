@@ -148,6 +148,21 @@ class App(unittest.TestCase):
         self.assertEqual(r.returncode, 2)
         self.assertIn("nowhere", r.stderr)
 
+    def test_an_installed_program_takes_its_catalogue_along(self):
+        subprocess.run(["cmake", "--install", PROGRAM.parent, "--prefix", self.dir / "a"],
+                       check=True, stdout=subprocess.DEVNULL)
+        (self.dir / "a").rename(self.dir / "b")
+        env = {k: v for k, v in self.env.items() if k != "KENTLEDGE_CONFIG"}
+        command = [self.dir / "b/bin/kentledge", "catalogue"]
+        r = subprocess.run(command, cwd="/", env=env, capture_output=True, encoding="utf-8")
+        self.assertEqual(r.returncode, 0, r.stderr)
+        self.assertEqual(r.stdout, self.call("catalogue").stdout)
+        (self.dir / "b/share/kentledge/config/soils.cfg").unlink()
+        r = subprocess.run(command, cwd="/", env=env, capture_output=True, encoding="utf-8")
+        self.assertEqual(r.returncode, 2)
+        self.assertIn("b/bin/../share/kentledge/config/soils.cfg", r.stderr)
+        shutil.rmtree(self.dir / "b")
+
     # ---- results ---------------------------------------------------------------------
 
     def test_a_run_writes_its_folder_and_prints_its_tables(self):
