@@ -14,4 +14,5 @@ if ! { (cd "$root" && cmake --preset release) &&
     cat "$log" >&2
     exit 1
 fi
+rm -f "$log" # exec leaves no trap behind
 exec "$root/build/kentledge" run "$root/cases/design/brackenmoss/brackenmoss.cfg" "$@"

@@ -3,10 +3,12 @@
 # packages_need LIST...: makes sure the Debian packages are there. Quiet when nothing is
 # missing. Installs with apt as root or through sudo; elsewhere says what is needed.
 
+# shellcheck disable=SC2034  # for whoever sources this
 PACKAGES_BUILD="gcc libc6-dev make cmake pkg-config libsundials-dev libsuitesparse-dev
 libconfig-dev libudunits2-dev libjansson-dev"
 
-PACKAGES_TEST="git libcmocka-dev clang clang-tidy clang-format-14 libclang-rt-14-dev
+# shellcheck disable=SC2034
+PACKAGES_TEST="libcmocka-dev clang clang-tidy-14 clang-format-14 locales
 python3-numpy python3-fluids python3-iapws"
 
 packages_missing() {

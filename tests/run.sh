@@ -23,8 +23,8 @@ build() {
 }
 
 build clang
-ctest --preset clang
+ctest --preset clang -j "$(nproc)"
 build sanitize
-ctest --preset sanitize
+ctest --preset sanitize -j "$(nproc)"
 build ci
-ctest --preset ci
+ctest --preset ci -j "$(nproc)"

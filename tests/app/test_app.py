@@ -250,11 +250,13 @@ class App(unittest.TestCase):
                 self.assertEqual(block[side], round(block[side], 2))
 
     def test_decimal_points_stay_points_in_every_locale(self):
-        known = subprocess.run(["locale", "-a"], stdout=subprocess.PIPE, encoding="utf-8")
-        if "de_DE.utf8" not in known.stdout.split():
-            self.skipTest("the locale de_DE.UTF-8 is not installed")
+        subprocess.run(["localedef", "-i", "de_DE", "-f", "UTF-8",
+                        self.dir / "de_DE.UTF-8"], check=True)
         plain = self.call("run", "main.cfg", "--format=csv", "--no-files")
-        env = dict(self.env, LC_ALL="de_DE.UTF-8", LANG="de_DE.UTF-8")
+        env = dict(self.env, LC_ALL="de_DE.UTF-8", LOCPATH=str(self.dir))
+        comma = subprocess.run(["/usr/bin/printf", "%.1f", "1,5"], env=env,
+                               stdout=subprocess.PIPE, encoding="utf-8")
+        self.assertEqual(comma.stdout, "1,5")  # else nothing is tested
         other = self.call("run", "main.cfg", "--format=csv", "--no-files", env=env)
         self.assertEqual(plain.stdout, other.stdout)
 

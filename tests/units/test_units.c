@@ -339,7 +339,7 @@ static void a_comma_locale_changes_nothing(void **state)
         set = setlocale(LC_ALL, names[i]);
     }
     if (!set) set = make_comma_locale();
-    if (!set) skip(); /* neither there nor to be made on this machine */
+    assert_non_null(set); /* from package `locales` */
     kent_error err = {0};
     kent_units *fresh = NULL;
     double si = NAN;
