@@ -92,7 +92,7 @@ static void derive_leg(const kent_sheet *s, size_t port, kent_derivation *d)
         const double share = axis_of(step, a) / kent_vec3_length(step);
         (void)snprintf(formula, sizeof formula, "(%c%d-%c0)/L%d", AXES[a], n, AXES[a],
                        n);
-        kent_derivation_work(d, symbol("n%d%c", n, AXES[a]).text, share, KENT_RATIO,
+        kent_derivation_work(d, symbol("n_%d%c", n, AXES[a]).text, share, KENT_RATIO,
                              formula, "", "direction out of the fitting");
     }
 }
@@ -110,12 +110,12 @@ static void derive_angle(const kent_sheet *s, size_t i, size_t j, const char *sa
     char formula[160];
     const int a = (int)i + 1, b = (int)j + 1;
 
-    (void)snprintf(formula, sizeof formula, "%s(n%dx*n%dx+n%dy*n%dy+n%dz*n%dz)",
+    (void)snprintf(formula, sizeof formula, "%s(n_%dx*n_%dx+n_%dy*n_%dy+n_%dz*n_%dz)",
                    bend ? "-" : "", a, b, a, b, a, b);
-    kent_derivation_work(d, "c", cosine, KENT_RATIO, formula, bend ? "5.4" : "5.7",
+    kent_derivation_work(d, "cosine", cosine, KENT_RATIO, formula, bend ? "5.4" : "5.7",
                          "cosine of the angle, by the two directions");
     kent_derivation_put(d, "angle", angle, KENT_ANGLE, KENT_COMPUTED, says);
-    kent_derivation_work(d, "c'", cos(angle), KENT_RATIO, "cos(angle)", "",
+    kent_derivation_work(d, "cosine'", cos(angle), KENT_RATIO, "cos(angle)", "",
                          "check: the same cosine");
 }
 
@@ -167,7 +167,8 @@ static void case_row(const kent_sheet *s, size_t i, kent_table *t)
     const bool governs = s->holding->governing == (int)i;
     const kent_sense sense = governs ? s->holding->sense : KENT_RESULTANT;
     const kent_instant *at = &c->worst[sense];
-    const kent_vec3 thrust = at->set ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
+    const kent_vec3 thrust =
+        at->set ? kent_instant_lasting(at) : (kent_vec3){NAN, NAN, NAN};
     const double whole = kent_vec3_length(thrust);
     const double numbers[] = {thrust.x, thrust.y, thrust.z, whole};
     kent_table_cell(t, "%s%s", c->name, governs ? " *" : "");
@@ -228,23 +229,32 @@ static const char *head_words(const kent_model *m, const kent_load_case *c)
                                         : "static level stated";
 }
 
-/* The pressure of one case out of a level, a head or the test gauge; n: its number. */
-static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c, int n,
-                                 kent_derivation *d)
+/* A symbol of one case: "p_B" of the second, so that it is no port's p_2. */
+static kent_symbol case_symbol(const char *what, size_t index)
+{
+    const char letter = (char)('A' + index % 26);
+    return index < 26 ? symbol("%s_%c", what, letter)
+                      : symbol("%s_%c%zu", what, letter, index / 26);
+}
+
+/* The pressure of one case out of a level, a head or the test gauge. */
+static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c,
+                                 size_t index, kent_derivation *d)
 {
     const kent_model *m = s->model;
     const double p = c->worst[KENT_RESULTANT].pressure;
     const double head = p / (m->water.density * m->gravity) + s->fitting->at.z;
     char formula[64];
     if (c->scenario < 0 && c->kind == KENT_CASE_TEST) {
-        kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE,
+        kent_derivation_work(d, case_symbol("p", index).text, p, KENT_PRESSURE,
                              "pg+rho*g*(zg-z)", "9.1", "test pressure, by elevation");
         return;
     }
-    kent_derivation_put(d, symbol("H%d", n).text, head, KENT_LENGTH, KENT_COMPUTED,
-                        head_words(m, c));
-    (void)snprintf(formula, sizeof formula, "rho*g*(H%d-z)", n);
-    kent_derivation_work(d, symbol("p%d", n).text, p, KENT_PRESSURE, formula,
+    kent_derivation_put(d, case_symbol("H", index).text, head, KENT_LENGTH,
+                        KENT_COMPUTED, head_words(m, c));
+    (void)snprintf(formula, sizeof formula, "rho*g*(%s-z)",
+                   case_symbol("H", index).text);
+    kent_derivation_work(d, case_symbol("p", index).text, p, KENT_PRESSURE, formula,
                          is_static(c) ? "9.2" : "9.3", "pressure at the centre");
 }
 
@@ -273,19 +283,21 @@ static void print_case_arithmetic(const kent_sheet *s)
     for (size_t i = 0; i < s->loads->count; i++) {
         const kent_load_case *c = &s->loads->cases[i];
         const kent_instant *at = &c->worst[KENT_RESULTANT];
-        const int n = (int)i + 1;
-        char formula[64];
+        const kent_symbol factor = case_symbol("SF", i), force = case_symbol("T", i);
+        char words[96];
         if (!at->set) continue;
-        kent_derivation_heading(&d, c->name);
-        derive_case_pressure(s, c, n, &d);
-        const double thrust = kent_vec3_length(at->balance.thrust);
-        kent_derivation_put(&d, symbol("T%d", n).text, thrust, KENT_FORCE,
-                            KENT_COMPUTED, "thrust, by the balance of its ports");
-        kent_derivation_put(&d, symbol("SF%d", n).text, c->safety_factor, KENT_RATIO,
-                            KENT_GIVEN, "factor of this case");
-        (void)snprintf(formula, sizeof formula, "SF%d*T%d", n, n);
-        kent_derivation_work(&d, symbol("F%d", n).text, c->safety_factor * thrust,
-                             KENT_FORCE, formula, "10.11", "factored");
+        (void)snprintf(words, sizeof words, "Case %s: %s", case_symbol("", i).text + 1,
+                       c->name);
+        kent_derivation_heading(&d, words);
+        derive_case_pressure(s, c, i, &d);
+        const double thrust = kent_vec3_length(kent_instant_lasting(at));
+        kent_derivation_put(&d, force.text, thrust, KENT_FORCE, KENT_COMPUTED,
+                            "thrust, by the balance of its ports");
+        kent_derivation_put(&d, factor.text, c->safety_factor, KENT_RATIO, KENT_GIVEN,
+                            "factor of this case");
+        (void)snprintf(words, sizeof words, "%s*%s", factor.text, force.text);
+        kent_derivation_work(&d, case_symbol("F", i).text, c->safety_factor * thrust,
+                             KENT_FORCE, words, "10.11", "factored");
     }
     kent_text_add(s->out, "\n");
     kent_steps_print(&d, s->units, s->limit, s->out);
