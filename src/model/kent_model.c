@@ -33,6 +33,7 @@ kent_model *kent_model_new(void)
                               .wave_speed_tolerance = USUAL_SPEED_TOLERANCE,
                               .min_reaches = 20,
                               .time_step = (double)NAN,
+                              .place = {-1, 0},
                               .history_rows = 20000};
     return m;
 }
@@ -136,6 +137,14 @@ done:
 double kent_model_pressure(const kent_model *m, double head, double level)
 {
     return m->water.density * m->gravity * (head - level);
+}
+
+void kent_model_place_text(const kent_model *m, kent_place place, char *out,
+                           size_t size)
+{
+    out[0] = '\0';
+    if (place.file < 0 || (size_t)place.file >= m->file_count) return;
+    (void)snprintf(out, size, "%s:%d", m->files[place.file], place.line);
 }
 
 /* A list of structs whose first member is the id, so that one search serves all. */

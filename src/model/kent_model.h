@@ -215,6 +215,7 @@ typedef struct kent_solver {
     double wave_speed_tolerance; /* - */
     int min_reaches;
     double time_step; /* s; NAN: chosen */
+    kent_place place; /* of time_step */
     int history_rows;
 } kent_solver;
 
@@ -424,6 +425,10 @@ double kent_span_loss(const kent_model *m, const kent_span *span, double flow,
 
 /* Pa gauge, from a piezometric head (m) at a level (m). */
 double kent_model_pressure(const kent_model *m, double head, double level);
+
+/* "mains.cfg:42" of a place; empty where nothing is known. */
+void kent_model_place_text(const kent_model *m, kent_place place, char *out,
+                           size_t size);
 
 /* Index, or -1. */
 int kent_model_point_index(const kent_model *m, const char *id);

@@ -46,14 +46,6 @@ static kent_steady *steady_new(const kent_model *m)
     return s;
 }
 
-/* "mains.cfg:42" of a place; empty where nothing is known. */
-static void place_text(const kent_model *m, kent_place place, char *text, size_t size)
-{
-    text[0] = '\0';
-    if (place.file < 0 || (size_t)place.file >= m->file_count) return;
-    (void)snprintf(text, size, "%s:%d", m->files[place.file], place.line);
-}
-
 static const char *node_name(const kent_model *m, int node)
 {
     return m->points[m->nodes[node].point].id;
@@ -75,7 +67,7 @@ static kent_status check_valve_flows(const kent_model *m, kent_error *err)
         char where[160];
         if (!isnan(v->capacity)) continue;
         if (v->flow != 0.0 && isfinite(v->flow) && valve_share(v) > 0.0) continue;
-        place_text(m, v->place, where, sizeof where);
+        kent_model_place_text(m, v->place, where, sizeof where);
         return kent_error_set(err, KENT_E_INPUT, where,
                               "the coefficient of valve %s cannot be found from a flow "
                               "of %g m3/s at an opening of %g; give a flow that passes "
@@ -113,7 +105,7 @@ static kent_status tell_unknown(const kent_equations *eq, const int *part, size_
                           (v->node[1] >= 0 && part[v->node[1]] == part[n]);
         char where[160];
         if (!here || eq->link[i].law != KENT_LINK_FLOW) continue;
-        place_text(m, v->place, where, sizeof where);
+        kent_model_place_text(m, v->place, where, sizeof where);
         return kent_error_set(
             err, KENT_E_INPUT, where,
             "nothing fixes the head at point %s: only valve %s leads there, and it %s; "
@@ -253,7 +245,7 @@ static kent_status find_capacity(const kent_model *m, const kent_valve *v,
         *capacity = fabs(v->flow) / sqrt(drop) / valve_share(v);
         return KENT_OK;
     }
-    place_text(m, v->place, where, sizeof where);
+    kent_model_place_text(m, v->place, where, sizeof where);
     return kent_error_set(
         err, KENT_E_INPUT, where,
         "valve %s cannot pass %g m3/s: the head would be %.3f m before it and %.3f m "

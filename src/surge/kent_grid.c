@@ -86,21 +86,24 @@ static double search_step(const kent_model *m, const kent_travels *t, double ste
     return fmax(step, least);
 }
 
-static kent_status check_given_step(const kent_travels *t, double step, double least,
-                                    kent_error *err)
+static kent_status check_given_step(const kent_model *m, const kent_travels *t,
+                                    double least, kent_error *err)
 {
+    const double step = m->solver.time_step;
+    char where[sizeof err->where];
+    kent_model_place_text(m, m->solver.place, where, sizeof where);
     if (!(step > 0.0) || !isfinite(step)) {
-        return kent_error_set(err, KENT_E_INPUT, "",
+        return kent_error_set(err, KENT_E_INPUT, where,
                               "time_step %g s is not a positive time", step);
     }
     if (step < least) {
-        return kent_error_set(err, KENT_E_INPUT, "",
+        return kent_error_set(err, KENT_E_INPUT, where,
                               "time_step %g s takes more than %g node updates; %.3g s "
                               "or longer, or leave it out",
                               step, UPDATES_MOST, least);
     }
     if (step > t->longest) {
-        return kent_error_set(err, KENT_E_INPUT, "",
+        return kent_error_set(err, KENT_E_INPUT, where,
                               "time_step %g s is longer than a wave takes through the "
                               "longest span; %.3g s or shorter, or leave it out",
                               step, t->longest);
@@ -117,7 +120,7 @@ static kent_status choose_step(const kent_model *m, double duration, double *ste
     const double least = budget_step(m, &t, duration);
     if (!isnan(m->solver.time_step)) {
         *step = m->solver.time_step;
-        return check_given_step(&t, *step, least, err);
+        return check_given_step(m, &t, least, err);
     }
     const double wanted = t.shortest / fmax((double)m->solver.min_reaches, 1.0);
     *step =
