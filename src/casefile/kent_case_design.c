@@ -71,7 +71,27 @@ static void check_event(kent_filling *f, kent_record *record, const kent_event *
     }
 }
 
-static void fill_event(kent_filling *f, kent_record *record)
+/* An event has to start within its scenario, and should end there. */
+static void check_duration(kent_filling *f, kent_record *record, const kent_event *e,
+                           const kent_scenario *s)
+{
+    const kent_model *m = f->model;
+    double lasts = e->ramp_time;
+    if (!record->sound || isnan(s->duration)) return;
+    if (e->law_count > 0) lasts = m->law[e->law_first + e->law_count - 1].time;
+    if (e->start_time >= s->duration) {
+        kent_record_complain(&f->reader, record, "start_time",
+                             "start_time is not within the %.6g s that the scenario "
+                             "lasts; start it earlier, or give a longer duration",
+                             s->duration);
+    } else if (e->start_time + lasts > s->duration) {
+        kent_notes_add(&f->model->cautions,
+                       "scenario '%s' ends at %.6g s, before its events have ended",
+                       s->id, s->duration);
+    }
+}
+
+static void fill_event(kent_filling *f, kent_record *record, const kent_scenario *s)
 {
     kent_model *m = f->model;
     if (kent_grow((void **)&m->events, &f->event_capacity, m->event_count + 1,
@@ -90,6 +110,7 @@ static void fill_event(kent_filling *f, kent_record *record)
         .place = record->place};
     check_event(f, record, e);
     if (kent_record_has(record, "opening_law")) fill_law(f, record, e);
+    check_duration(f, record, e, s);
 }
 
 void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
@@ -116,7 +137,7 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
             kent_record_element(&f->reader, events, record->label, i);
         if (!twig) continue;
         kent_record_read(&f->reader, twig, "event", record->label, i + 1, &event);
-        fill_event(f, &event);
+        fill_event(f, &event, s);
         if (f->reader.failed) return;
     }
     s->event_count = m->event_count - s->event_first;
