@@ -39,6 +39,7 @@ static void refuse_face(const kent_holding_work *w, const kent_holding *h, kent_
     const double limit = kent_face_height_limit(&w->m->rules, kent_site_axis(&w->site));
     const double cover = kent_face_cover_needed(&w->m->rules, &w->site, sideways);
     const double bearing = kent_face_bearing_needed(&w->m->rules, &w->site, sideways);
+    const char *sep = "";
 
     kent_text_add(
         t,
@@ -47,14 +48,16 @@ static void refuse_face(const kent_holding_work *w, const kent_holding *h, kent_
         kent_said_of(KENT_AREA, units, h->block.bearing_area + w->site.hole).s,
         kent_said_of(KENT_LENGTH, units, limit).s);
     if (!isnan(cover)) {
-        kent_text_add(t, "a cover of %s would serve, ",
+        kent_text_add(t, "a cover of %s would serve",
                       kent_said_of(KENT_LENGTH, units, cover).s);
+        sep = ", or ";
     }
     if (!isnan(bearing)) {
-        kent_text_add(t, "or ground that bears %s, ",
+        kent_text_add(t, "%sground that bears %s", sep,
                       kent_said_of(KENT_STRESS, units, bearing).s);
+        sep = ", or ";
     }
-    kent_text_add(t, "or ");
+    kent_text_add(t, "%s", sep);
     joints_offer(w, h, t);
 }
 

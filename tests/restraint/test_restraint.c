@@ -406,6 +406,18 @@ static void what_is_said_to_help_a_face_too_large_does_help(void **state)
     finish(&b, r);
 }
 
+static void where_no_cover_would_serve_the_help_begins_with_better_ground(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 80.0e6}};
+    kent_build b = main_of_five();
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, cases, 1);
+
+    kent_hand_expect(holding_of(&b, r, "C"), "at this depth; ground that bears");
+    finish(&b, r);
+}
+
 static void a_block_larger_than_the_rules_allow_is_refused(void **state)
 {
     (void)state;
@@ -676,6 +688,7 @@ int main(void)
         cmocka_unit_test(in_peat_it_says_how_far_it_is_to_sound_ground_on_each_side),
         cmocka_unit_test(peat_to_the_end_of_a_pipe_is_said_to_be_so),
         cmocka_unit_test(what_is_said_to_help_a_face_too_large_does_help),
+        cmocka_unit_test(where_no_cover_would_serve_the_help_begins_with_better_ground),
         cmocka_unit_test(a_block_larger_than_the_rules_allow_is_refused),
         cmocka_unit_test(a_bend_s_length_is_rounded_up_to_whole_pipes),
         cmocka_unit_test(beyond_a_right_angle_a_bend_draws_its_legs_along),
