@@ -107,7 +107,10 @@ static kent_exit read_catalogue(session *s)
         kent_catalogue_read(NULL, &s->catalogue, &s->complaints, &s->error);
     if (!status) return KENT_EXIT_DONE;
     const kent_exit failed = fail(s, status);
-    return status == KENT_E_IO ? KENT_EXIT_INPUT : failed; /* it is not where told */
+    if (status != KENT_E_IO) return failed;
+    (void)fprintf(stderr, "kentledge: that is a file of the catalogue; its folder is "
+                          "named by KENTLEDGE_CONFIG\n");
+    return KENT_EXIT_INPUT; /* it is not where told */
 }
 
 static kent_exit read_case(session *s)

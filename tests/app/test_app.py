@@ -147,6 +147,7 @@ class App(unittest.TestCase):
         r = self.call("catalogue", env=env)
         self.assertEqual(r.returncode, 2)
         self.assertIn("nowhere", r.stderr)
+        self.assertIn("its folder is named by KENTLEDGE_CONFIG", r.stderr)
 
     def test_an_installed_program_takes_its_catalogue_along(self):
         subprocess.run(["cmake", "--install", PROGRAM.parent, "--prefix", self.dir / "a"],
