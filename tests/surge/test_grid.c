@@ -92,16 +92,34 @@ static void the_step_is_the_longest_that_meets_the_tolerance(void **state)
     kent_build_clear(&b);
 }
 
-static void a_stub_does_not_shorten_the_step(void **state)
+/* 7.23: by the square root of its travel time only, not in proportion to it. */
+static void a_stub_is_lumped_as_far_as_its_delay_allows(void **state)
 {
     (void)state;
     const double length[] = {2000.0, 5.0, 1000.0};
     kent_build b = line_of(length, 3);
     kent_grid *g = plan(&b, 60.0);
-    assert_close(g->step, 0.05, 1e-9); /* 20 reaches of the 1000 m */
+    const double travel = 0.005, longest = 2.0; /* s */
     assert_int_equal(g->reaches[1], 1);
     assert_true(g->misses[1]);
     assert_int_equal(g->miss_count, 1);
+    const double delay = g->step * g->step / travel; /* s */
+    assert_true(delay <= longest / 50.0 && delay > 0.9 * longest / 50.0);
+    kent_grid_free(g);
+    kent_build_clear(&b);
+}
+
+/* 333.33 and 777.7 m have no common reach: nothing would be gained by the finest grid.
+ */
+static void a_tolerance_nobody_can_meet_does_not_cost_the_whole_budget(void **state)
+{
+    (void)state;
+    const double length[] = {1000.0, 333.33, 777.7};
+    kent_build b = line_of(length, 3);
+    b.model->solver.wave_speed_tolerance = 0.0;
+    kent_grid *g = plan(&b, 60.0);
+    assert_close(g->step, 333.33 / 1000.0 / 20.0, 1e-9);
+    assert_int_equal(g->miss_count, 2);
     kent_grid_free(g);
     kent_build_clear(&b);
 }
@@ -175,7 +193,8 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(one_pipe_takes_just_its_reaches),
         cmocka_unit_test(the_step_is_the_longest_that_meets_the_tolerance),
-        cmocka_unit_test(a_stub_does_not_shorten_the_step),
+        cmocka_unit_test(a_stub_is_lumped_as_far_as_its_delay_allows),
+        cmocka_unit_test(a_tolerance_nobody_can_meet_does_not_cost_the_whole_budget),
         cmocka_unit_test(the_budget_comes_before_tolerance_and_reaches),
         cmocka_unit_test(a_given_step_is_honoured_or_refused),
         cmocka_unit_test(refining_keeps_the_wave_speeds),

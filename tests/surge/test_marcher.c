@@ -398,6 +398,45 @@ static void a_short_span_keeps_its_inertia(void **state)
     kent_build_clear(&b);
 }
 
+/* The highest head at a valve shut in 3 s, behind `stub` m of pipe at the end of 4 km;
+ * 0: none. */
+static double highest_behind(double stub)
+{
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "J", 4000.0, 0.0, 0.0);
+    kent_build_point(&b, "E", 4000.0 + stub, 0.0, 0.0);
+    kent_build_pipe(&b, "1", "R J", 0.3, 1000.0);
+    if (stub > 0.0) kent_build_pipe(&b, "2", "J E", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 60.0);
+    const int v = kent_build_valve(&b, "V", stub > 0.0 ? "E" : "J", 0.02, 0.0);
+    const int s = kent_build_scenario(&b, "shut", 20.0);
+    kent_build_ramp(&b, s, KENT_EVENT_VALVE, v, 0.5, 3.0, 0.0);
+    b.model->solver.friction = KENT_SURGE_NONE;
+    const kent_watch end = stub > 0.0 ? (kent_watch){1, stub} : (kent_watch){0, 4000.0};
+    march m = march_new(&b, 20.0, 0, &end, 1, 1);
+    kent_trace trace;
+    kent_error err = {0};
+    double highest = 0.0; /* m */
+    while (kent_marcher_advance(m.marcher, 1, &trace, &err) == 1 &&
+           trace.time[0] < 15.0) {
+        highest = fmax(highest, trace.head[0]);
+    }
+    march_clear(&m);
+    kent_build_clear(&b);
+    return highest;
+}
+
+static void a_stub_leaves_the_surge_what_it_was(void **state)
+{
+    (void)state;
+    const double alone = highest_behind(0.0), rise = alone - 60.0; /* m */
+    assert_true(rise > 100.0);
+    assert_within(highest_behind(10.0), alone, 0.01 * rise);
+    assert_within(highest_behind(1.0), alone, 0.01 * rise);
+    assert_within(highest_behind(0.1), alone, 0.01 * rise);
+}
+
 static void a_valve_follows_its_opening_law(void **state)
 {
     (void)state;
@@ -568,6 +607,7 @@ int main(void)
         cmocka_unit_test(the_envelope_is_the_worst_of_every_instant),
         cmocka_unit_test(between_grid_points_both_neighbours_count),
         cmocka_unit_test(a_short_span_keeps_its_inertia),
+        cmocka_unit_test(a_stub_leaves_the_surge_what_it_was),
         cmocka_unit_test(a_valve_follows_its_opening_law),
         cmocka_unit_test(beyond_the_stability_limit_the_march_stops_and_says_where),
         cmocka_unit_test(a_stiff_span_is_swept_implicitly_and_keeps_its_steady_state),
