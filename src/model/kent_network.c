@@ -122,33 +122,37 @@ static void cut_pipe(kent_model *m, kent_layout *l, int index,
     }
 }
 
+typedef struct named_span {
+    const char *id;
+    int pipe;
+} named_span;
+
 static int by_id(const void *a, const void *b)
 {
-    const kent_span *const *x = a;
-    const kent_span *const *y = b;
-    const int order = strcmp((*x)->id, (*y)->id);
-    return order != 0 ? order : ((*x)->pipe > (*y)->pipe) - ((*x)->pipe < (*y)->pipe);
+    const named_span *x = a;
+    const named_span *y = b;
+    const int order = strcmp(x->id, y->id);
+    return order != 0 ? order : (x->pipe > y->pipe) - (x->pipe < y->pipe);
 }
 
 /* A pipe may be called what a span of another one is called. */
 static kent_status check_span_ids(const kent_model *m, kent_complaints *complaints)
 {
-    const kent_span **order = kent_alloc(m->span_count, sizeof *order);
-    if (!order) return KENT_E_NOMEM;
+    named_span *named = kent_alloc(m->span_count, sizeof *named);
+    if (!named) return KENT_E_NOMEM;
     for (size_t i = 0; i < m->span_count; i++) {
-        order[i] = &m->spans[i];
+        named[i] = (named_span){m->spans[i].id, m->spans[i].pipe};
     }
-    if (m->span_count > 0) qsort(order, m->span_count, sizeof *order, by_id);
+    if (m->span_count > 0) qsort(named, m->span_count, sizeof *named, by_id);
     for (size_t i = 1; i < m->span_count; i++) {
-        if (strcmp(order[i - 1]->id, order[i]->id) != 0) continue;
-        const kent_pipe *first = &m->pipes[order[i - 1]->pipe];
-        const kent_pipe *second = &m->pipes[order[i]->pipe];
+        if (strcmp(named[i - 1].id, named[i].id) != 0) continue;
+        const kent_pipe *second = &m->pipes[named[i].pipe];
         kent_place_complain(m, second->place, complaints,
                             "pipes \"%s\" and \"%s\" would both have a span called "
                             "\"%s\"; give one of them another id",
-                            first->id, second->id, order[i]->id);
+                            m->pipes[named[i - 1].pipe].id, second->id, named[i].id);
     }
-    free(order);
+    free(named);
     return KENT_OK;
 }
 

@@ -470,7 +470,7 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
     own = kent_copy_text(text);
     if (!own) return kent_error_nomem(err);
     for (char *p = own; (p = strstr(p, "\xC2\xA0")) != NULL;) {
-        memcpy(p, "  ", 2); /* no-break spaces, as pasted from a document */
+        p[0] = p[1] = ' '; /* no-break spaces, as pasted from a document */
     }
     for (size_t n = strlen(own); n > 0 && isspace((unsigned char)own[n - 1]); n--) {
         own[n - 1] = '\0';
