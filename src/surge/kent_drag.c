@@ -127,8 +127,10 @@ static kent_status choose_scheme(const kent_model *m, const kent_steady *s,
 
     if (kd <= IMPLICIT_FROM) return KENT_OK;
     if (steady > IMPLICIT_MOST) {
+        char where[sizeof err->where];
+        kent_model_place_text(m, m->pipes[m->spans[i].pipe].place, where, sizeof where);
         return kent_error_set(
-            err, KENT_E_INPUT, "",
+            err, KENT_E_INPUT, where,
             "span %s: friction takes %.2g of the wave in one reach (R|Q|/B); it needs "
             "at least %.0f reaches: raise min_reaches or shorten time_step",
             m->spans[i].id, steady,
