@@ -48,6 +48,22 @@ static void judge_rating(kent_results *r, const kent_scenario_result *run)
     }
 }
 
+/* On every fitting that the low pressure touches. */
+static void caution_touched(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    for (size_t i = 0; r->restraints && i < m->fitting_count; i++) {
+        const int point = m->fittings[i].point;
+        kent_notes *cautions = &r->restraints->fittings[i].cautions;
+        if (point < 0 || !run->touched[point]) continue;
+        kent_notes_add(cautions,
+                       "%s: the pressure falls below the vapour limit at or next to "
+                       "it; what follows is not to be relied on",
+                       m->scenarios[run->scenario].id);
+        r->cautions.failed = r->cautions.failed || cautions->failed;
+    }
+}
+
 static void judge_vapour(kent_results *r, const kent_scenario_result *run)
 {
     const kent_model *m = r->model;
@@ -68,6 +84,7 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
         m->scenarios[run->scenario].id, kent_text_of(&where));
     kent_text_clear(&where);
     r->limit_exceeded = true;
+    caution_touched(r, run);
 }
 
 static void judge_lateness(kent_results *r, const kent_scenario_result *run)

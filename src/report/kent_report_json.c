@@ -226,9 +226,11 @@ static void put_steady(kent_writer *w)
 /* ---- scenarios --------------------------------------------------------------------
  */
 
-static json_t *scenario_point(const kent_model *m, size_t point, const kent_peak *peak)
+static json_t *scenario_point(const kent_model *m, size_t point,
+                              const kent_scenario_result *s)
 {
     const kent_point *p = &m->points[point];
+    const kent_peak *peak = &s->points[point];
     const double z = p->at.z;
     kent_object o = object_new();
     set(&o, "id", words(p->id));
@@ -239,6 +241,7 @@ static json_t *scenario_point(const kent_model *m, size_t point, const kent_peak
     set(&o, "highest_pressure_Pa", real(kent_model_pressure(m, peak->highest_head, z)));
     set(&o, "lowest_pressure_Pa", real(kent_model_pressure(m, peak->lowest_head, z)));
     set(&o, "cavity_m3", json_null());
+    set(&o, "below_vapour", json_boolean(s->touched[point]));
     return object_done(o);
 }
 
@@ -259,7 +262,7 @@ static void put_scenario(kent_writer *w, const kent_scenario_result *s)
     put_value(w, count_of(s->below_vapour));
     open_list(w, ",\n\"points\": [");
     for (size_t i = 0; i < m->point_count; i++) {
-        put_element(w, scenario_point(m, i, &s->points[i]));
+        put_element(w, scenario_point(m, i, s));
     }
     put_text(w, "]}");
 }

@@ -1,4 +1,5 @@
 #include "kent_pressures.h"
+#include "kent_said.h"
 #include "kent_shown.h"
 #include "kent_sink.h"
 #include "kent_summary.h"
@@ -401,7 +402,7 @@ static void add_extreme(const kent_page *page, const kent_extreme *e, kent_text 
     if (e->point >= 0) kent_text_add(words, " at %s", m->points[e->point].id);
     if (e->span >= 0) {
         kent_text_add(words, " in pipe %s, %s from its start", m->spans[e->span].id,
-                      kent_shown_with_unit(KENT_LENGTH, page->units, e->chainage).text);
+                      kent_said_whole(KENT_LENGTH, page->units, e->chainage).s);
     }
     if (isfinite(e->time)) kent_text_add(words, " (%.1f s)", e->time);
 }

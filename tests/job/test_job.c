@@ -111,6 +111,33 @@ a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky(void **stat
     kent_build_clear(&b);
 }
 
+static void a_fitting_below_the_vapour_limit_says_so(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    b.model->points[1].at.z = 75.0; /* a crest far above the levels at both ends */
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    const int crest = kent_build_fitting_of(&b, "B");
+    assert_true(r->limit_exceeded);
+    assert_true(a_caution_holds(&r->cautions, "at or next to"));
+    assert_true(r->scenarios[0].touched[1]);
+    assert_true(
+        a_caution_holds(&r->restraints->fittings[crest].cautions, "vapour limit"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+
+    const int slow = 1;
+    b = main_with_two_closures();
+    kent_build_derive(&b);
+    r = run(&b,
+            &(kent_job_options){.scenarios = &slow, .scenario_count = 1, .threads = 1});
+    assert_false(
+        a_caution_holds(&r->restraints->fittings[crest].cautions, "vapour limit"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 static void a_rating_that_is_passed_is_said_and_sets_the_limit(void **state)
 {
     (void)state;
@@ -166,6 +193,7 @@ int main(void)
         cmocka_unit_test(a_peak_is_the_highest_of_its_history),
         cmocka_unit_test(
             a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky),
+        cmocka_unit_test(a_fitting_below_the_vapour_limit_says_so),
         cmocka_unit_test(a_rating_that_is_passed_is_said_and_sets_the_limit),
         cmocka_unit_test(a_peak_at_the_very_end_asks_for_a_longer_run),
         cmocka_unit_test(a_sheet_of_ports_runs_without_a_network),
