@@ -271,6 +271,9 @@ static void describe_legs(kent_fitting *f, const kent_port *ports)
         f->plan_turn = kent_ports_plan_turn(ports);
         f->orientation = kent_ports_orientation(ports);
     }
+    if (f->type == KENT_REDUCER && kent_ports_turn(ports) > KENT_LEAST_TURN) {
+        f->angle = kent_ports_turn(ports);
+    }
     if (f->port_count >= 3) {
         f->angle = kent_ports_branch_angle(ports);
         f->branch_size = ports[2].inside_diameter;

@@ -165,7 +165,7 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
     kent_notes_add(&h->cautions,
                    "restrained length %s; joints and pipes must be rated for the "
                    "governing pressure",
-                   kent_leg_rule_of(type)->says);
+                   kent_leg_rule_of(w->fitting)->says);
 }
 
 void kent_holding_caution(kent_holding_work *w, kent_holding *h)

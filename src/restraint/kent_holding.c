@@ -193,7 +193,7 @@ static double leg_use(const kent_holding_work *w, const kent_leg *leg)
 
 static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
 {
-    const bool either = kent_leg_rule_of(w->fitting->type)->either;
+    const bool either = kent_leg_rule_of(w->fitting)->either;
     size_t fitting = 0;
     double use = 0.0;
 
@@ -211,7 +211,7 @@ static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
 
 void kent_holding_legs(kent_holding_work *w, kent_holding *h)
 {
-    const kent_leg_rule *rule = kent_leg_rule_of(w->fitting->type);
+    const kent_leg_rule *rule = kent_leg_rule_of(w->fitting);
     const size_t end = rule->first + rule->count < w->fitting->port_count
                            ? rule->first + rule->count
                            : w->fitting->port_count;

@@ -24,11 +24,16 @@ static const kent_leg_rule RULES[] = {
     {0, 0, "nowhere", KENT_STRAIGHT, false, false},
 };
 
-const kent_leg_rule *kent_leg_rule_of(kent_fitting_type type)
+static const kent_leg_rule TURNED_REDUCER = {0,     2,    "on each leg", KENT_REDUCER,
+                                             false, false};
+
+const kent_leg_rule *kent_leg_rule_of(const kent_fitting *fitting)
 {
     const size_t count = sizeof RULES / sizeof RULES[0];
+    const kent_fitting_type type = fitting->type;
     size_t i = 0;
 
+    if (type == KENT_REDUCER && fitting->angle > LEAST_TURN) return &TURNED_REDUCER;
     while (i + 1 < count && RULES[i].type != type) {
         i++;
     }
@@ -120,7 +125,7 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
                           kent_vec3 thrust, double factor, kent_leg_work *out)
 {
     const kent_port *p = &m->ports[fitting->port_first + port];
-    const kent_leg_rule *rule = kent_leg_rule_of(fitting->type);
+    const kent_leg_rule *rule = kent_leg_rule_of(fitting);
     const double push = kent_vec3_length(thrust);
     unsigned lack = 0;
 

@@ -53,7 +53,7 @@ typedef struct kent_leg_work {
     double length;            /* m */
 } kent_leg_work;
 
-/* How the legs of one type of fitting are restrained. */
+/* How the legs of a fitting are restrained. */
 typedef struct kent_leg_rule {
     size_t first, count; /* ports that are legs; count is an upper bound */
     const char *says;    /* where, as the end of a sentence */
@@ -62,7 +62,8 @@ typedef struct kent_leg_rule {
     bool either; /* one leg alone is enough */
 } kent_leg_rule;
 
-const kent_leg_rule *kent_leg_rule_of(kent_fitting_type type);
+/* By its type; a reducer that also turns pulls on both legs, as a bend does. */
+const kent_leg_rule *kent_leg_rule_of(const kent_fitting *fitting);
 
 /* Whether fitting and thrust (N) let the passive resistance of the trench side count.
  */

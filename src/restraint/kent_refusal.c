@@ -28,7 +28,7 @@ static void joints_offer(const kent_holding_work *w, const kent_holding *h,
     }
     kent_text_add(t, "restrained joints over %s %s%s",
                   kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s,
-                  kent_leg_rule_of(w->fitting->type)->says,
+                  kent_leg_rule_of(w->fitting)->says,
                   fits ? "" : " and beyond what they meet");
 }
 

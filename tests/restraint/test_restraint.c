@@ -628,6 +628,41 @@ static void a_length_that_runs_into_peat_does_not_fit(void **state)
     finish(&b, r);
 }
 
+/* A 600 mm main goes over to 500 mm at C, in line or turning by `turn` (rad). */
+static kent_build main_that_narrows(double turn)
+{
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "C", 300.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "D", 300.0 + 300.0 * cos(turn), 300.0 * sin(turn), 50.0);
+    (void)kent_build_pipe(&b, "P", "A C", 0.6, 1000.0);
+    (void)kent_build_pipe(&b, "Q", "C D", 0.5, 1000.0);
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    const int t = kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    b.model->soils[t].friction_angle = 30.0 * DEGREE;
+    b.model->soils[t].cohesion = 0.0;
+    b.model->soils[t].friction_ratio = 0.75;
+    b.model->ground.water_table = (double)INFINITY;
+    ask_for_joints(&b, "C");
+    kent_build_derive(&b);
+    return b;
+}
+
+/* In line the legs pull and push on one axis; a turn pulls on both, as at a bend. */
+static void a_reducer_is_held_by_either_leg_unless_it_turns(void **state)
+{
+    (void)state;
+    kent_build straight = main_that_narrows(0.0);
+    kent_restraints *r = kent_hand_size(&straight, TEST, 1);
+    kent_hand_expect(holding_of(&straight, r, "C"), "on either leg alone");
+    finish(&straight, r);
+
+    kent_build turned = main_that_narrows(45.0 * DEGREE);
+    r = kent_hand_size(&turned, TEST, 1);
+    kent_hand_expect(holding_of(&turned, r, "C"), "on each leg");
+    finish(&turned, r);
+}
+
 static void a_dead_end_is_held_by_friction_alone(void **state)
 {
     (void)state;
@@ -698,6 +733,7 @@ int main(void)
         cmocka_unit_test(soil_without_any_friction_gives_no_length),
         cmocka_unit_test(a_length_that_meets_a_tee_does_not_fit),
         cmocka_unit_test(a_length_that_runs_into_peat_does_not_fit),
+        cmocka_unit_test(a_reducer_is_held_by_either_leg_unless_it_turns),
         cmocka_unit_test(a_dead_end_is_held_by_friction_alone),
         cmocka_unit_test(a_fitting_without_a_network_gets_a_block_and_no_length),
     };
