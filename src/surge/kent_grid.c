@@ -4,8 +4,9 @@
 #include <math.h>
 #include <stdlib.h>
 
-/* Most node updates (nodes x steps) of one run: some tens of seconds on one core. */
-static const double UPDATES_MOST = 2e10;
+/* Most node updates (nodes x steps) of one scenario: some seconds on one core, and four
+ * times that for its finer grid. */
+static const double UPDATES_MOST = 5e9;
 /* A span shorter, in travel time, than this share of the longest is lumped: it takes
  * the reaches the common step leaves it, at least one. */
 static const double LUMPED_BELOW = 1.0 / 40.0;

@@ -132,7 +132,7 @@ static void the_budget_comes_before_tolerance_and_reaches(void **state)
     kent_grid *g = plan(&b, 60.0), *slow = plan(&b, 3e6);
     assert_true(slow->step > 2.0 * g->step);
     const double updates = (double)slow->node_total * 3e6 / slow->step;
-    assert_true(updates <= 2e10 && updates > 1e10);
+    assert_true(updates <= 5e9 && updates > 2.5e9);
     kent_grid_free(slow);
     kent_grid_free(g);
     kent_build_clear(&b);
