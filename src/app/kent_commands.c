@@ -14,6 +14,8 @@ typedef struct session {
     kent_model *model;
     int *scenarios; /* [options->scenario_count] */
     size_t scenario_count;
+    char *folder_name;
+    kent_folder *folder; /* NULL: no files are written */
     kent_results *results;
     kent_error error;
     kent_complaints complaints;
@@ -21,6 +23,8 @@ typedef struct session {
 
 static void session_close(session *s)
 {
+    kent_folder_free(s->folder);
+    free(s->folder_name);
     kent_results_free(s->results);
     free(s->scenarios);
     kent_model_free(s->model);
@@ -236,33 +240,39 @@ static void say_cautions(const session *s)
     }
 }
 
+/* Before the work: a place that cannot take results is said at once, not after it. */
+static kent_exit open_folder(session *s)
+{
+    if (s->options->no_files) return KENT_EXIT_DONE;
+    s->folder_name = s->options->out ? kent_copy_text(s->options->out)
+                                     : kent_output_folder_name(s->options->subject);
+    if (!s->folder_name) return fail(s, kent_error_nomem(&s->error));
+    const kent_status status =
+        kent_folder_open(s->folder_name, KENT_OUTPUT_MARKER, &s->folder, &s->error);
+    return status ? fail(s, status) : KENT_EXIT_DONE;
+}
+
 /* The folder is filled beside its place, then the tables are printed, then the folder
  * is put in place: where printing fails, the old results still stand. */
 static kent_exit write_results(session *s)
 {
     const kent_report_options o = report_options(s);
-    char *name = s->options->out ? kent_copy_text(s->options->out)
-                                 : kent_output_folder_name(s->options->subject);
-    kent_folder *folder = NULL;
     kent_text text = {0};
-    kent_status status = name ? KENT_OK : kent_error_nomem(&s->error);
-    if (!status && !s->options->no_files) {
-        status = kent_folder_open(name, KENT_OUTPUT_MARKER, &folder, &s->error);
-        if (!status) status = kent_output_fill(s->results, &o, folder, &s->error);
-    }
+    kent_status status = KENT_OK;
+    if (s->folder) status = kent_output_fill(s->results, &o, s->folder, &s->error);
     if (!status) status = print_results(s, &text);
     if (!status) status = kent_output_print(&text, &s->error);
-    if (!status && folder) status = kent_folder_commit(folder, &s->error);
-    if (!status) say_cautions(s);
+    if (!status && s->folder) status = kent_folder_commit(s->folder, &s->error);
+    kent_text_clear(&text);
     if (status) {
         say_error(&s->error, status);
-    } else if (folder && !s->options->quiet) {
-        (void)fprintf(stderr, "results in %s\n", name);
+        return KENT_EXIT_FAILED;
     }
-    kent_text_clear(&text);
-    kent_folder_free(folder);
-    free(name);
-    return status ? KENT_EXIT_FAILED : KENT_EXIT_DONE;
+    say_cautions(s);
+    if (s->folder && !s->options->quiet) {
+        (void)fprintf(stderr, "results in %s\n", s->folder_name);
+    }
+    return KENT_EXIT_DONE;
 }
 
 /* ---- the commands -----------------------------------------------------------------
@@ -272,6 +282,7 @@ static kent_exit command_run(session *s)
 {
     kent_exit code = read_case(s);
     if (!code) code = choose_scenarios(s);
+    if (!code) code = open_folder(s);
     if (!code) code = do_job(s);
     if (!code) code = write_results(s);
     if (code || !s->options->strict || !s->results->limit_exceeded) return code;
