@@ -202,19 +202,21 @@ static void fill_solver(kent_filling *f)
 
 static void fill_rules(kent_filling *f)
 {
-    static const char USUAL[] = "common-practice";
+    static const char *const USUAL[] = {
+        [KENT_SI] = "common-practice", [KENT_US] = "common-practice-US"};
+    const char *usual = USUAL[f->reader.system]; /* the case's, however it is shown */
     kent_record r;
     const bool there = read_group(f, &f->root, "design_rules", &r);
     int set = there ? kent_record_field(&r, "set")->index : -1;
     if (set < 0) {
-        set = kent_directory_find(&f->reader.shelves[KENT_SHELF_RULES], USUAL);
-        kent_fill_assume(f, "design rules", USUAL, "no set of rules named");
+        set = kent_directory_find(&f->reader.shelves[KENT_SHELF_RULES], usual);
+        kent_fill_assume(f, "design rules", usual, "no set of rules named");
     }
     if (set < 0 || (size_t)set >= f->catalogue->rule_count) {
         kent_complain(
             f->reader.complaints, kent_tree_file(f->reader.tree, 0), 1,
             "the catalogue has no set of rules \"%s\"; name one in design_rules",
-            USUAL);
+            usual);
         return;
     }
     kent_rules *rules = &f->model->rules;

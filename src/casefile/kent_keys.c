@@ -381,7 +381,8 @@ const kent_key KENT_KEYS[] = {
           "rows of a history beyond which it is thinned"),
     LATER("solver", "creep", "creep of plastic walls by material"),
 
-    REF("design_rules", "set", "rule", "common-practice",
+    REF("design_rules", "set", "rule",
+        "common-practice, or common-practice-US by units",
         "set of the catalogue of rules"),
     RULE_VALUES("design_rules", "the set's"),
 

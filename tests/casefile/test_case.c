@@ -151,6 +151,23 @@ static void a_case_may_override_single_design_rules(void **state)
     kent_catalogue_free(c);
 }
 
+static void a_case_in_US_units_has_blocks_in_whole_inches(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text = replaced(SOUND_CASE, "points", "units = \"US\";\npoints");
+    kent_model *m = read_sound(c, text);
+    assert_string_equal(m->rules.id, "common-practice-US");
+    assert_close(m->rules.side_step, 2.0 * 0.0254, 1e-12);
+    kent_model_free(m);
+    free(text);
+    m = read_sound(c, SOUND_CASE);
+    assert_string_equal(m->rules.id, "common-practice");
+    assert_close(m->rules.side_step, 0.05, 1e-12);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
 static void a_soil_may_start_from_a_row_of_the_catalogue(void **state)
 {
     (void)state;
@@ -297,6 +314,7 @@ int main(void)
         cmocka_unit_test(defaults_are_those_of_the_table_and_are_said),
         cmocka_unit_test(what_is_stated_is_not_noted_as_assumed),
         cmocka_unit_test(a_case_may_override_single_design_rules),
+        cmocka_unit_test(a_case_in_US_units_has_blocks_in_whole_inches),
         cmocka_unit_test(a_soil_may_start_from_a_row_of_the_catalogue),
         cmocka_unit_test(factors_by_load_case_replace_the_one_factor),
         cmocka_unit_test(a_case_may_hold_nothing_but_a_fitting_with_ports),
