@@ -42,11 +42,17 @@ static void caution_test_pressure(const kent_holding_work *w, kent_holding *h)
                    kent_said_of(KENT_PRESSURE, units, test).s);
 }
 
+/* One instant above 90 % may be the grid's own, however long its step. */
+static bool peak_is_short(const kent_load_case *c)
+{
+    return c->above_90_percent < fmax(KNOCK, 1.5 * c->step);
+}
+
 static void caution_peak(const kent_holding_work *w, kent_holding *h)
 {
     if (h->governing < 0) return;
     const kent_load_case *c = &w->loads->cases[h->governing];
-    if (c->scenario < 0 || !(c->above_90_percent < KNOCK)) return;
+    if (c->scenario < 0 || !peak_is_short(c)) return;
     kent_notes_add(
         &h->cautions,
         "the governing peak is short: '%s' stays above 90 %% of it for %.3f s", c->name,

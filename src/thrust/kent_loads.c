@@ -29,6 +29,7 @@ static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
         .scenario = scenario,
         .safety_factor = isnan(factor) ? m->rules.safety_factor : factor,
         .above_90_percent = NAN,
+        .step = NAN,
     };
     for (size_t k = 0; k < KENT_SENSES; k++) {
         c->worst[k].time = NAN;
@@ -136,6 +137,7 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
     c->lowest = kent_instant_of_frame(m, f, &seen->frame_lowest);
     c->highest = kent_instant_of_frame(m, f, &seen->frame_highest);
     c->above_90_percent = kent_seen_above_90_percent(seen, slot->step);
+    c->step = slot->step;
 }
 
 /* A valve shut with the most that can press on one side and nothing behind (9.4). */

@@ -40,6 +40,7 @@ typedef struct kent_load_case {
                                      always the worst, but may pull the other way */
     double above_90_percent; /* s that the resultant stays above 0.9 of its peak; NAN
                                 outside scenarios */
+    double step;             /* s, of the scenario's grid; NAN outside scenarios */
 } kent_load_case;
 
 typedef struct kent_fitting_loads {

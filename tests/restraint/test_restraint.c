@@ -211,6 +211,40 @@ static void a_surge_above_the_test_pressure_is_said(void **state)
     finish(&b, r);
 }
 
+static void a_governing_peak_of_a_knock_or_of_one_step_is_said(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6},
+                                           {"shut", KENT_CASE_OCCASIONAL, 1.5, 1.2e6}};
+    static const struct {
+        double lasts, step; /* s */
+        const char *says;   /* NULL: nothing */
+    } peaks[] = {{0.05, 0.01, "above 90 % of it for 0.050 s"},
+                 {0.11, 0.01, NULL},
+                 {0.25, 0.25, "above 90 % of it for 0.250 s"},
+                 {0.50, 0.25, NULL}};
+
+    for (size_t i = 0; i < sizeof peaks / sizeof peaks[0]; i++) {
+        kent_build b = main_of_five();
+        (void)kent_build_scenario(&b, "shut", 60.0);
+        kent_build_derive(&b);
+        kent_loads_result loads = kent_hand_loads(b.model, cases, 2);
+        const int c = kent_build_fitting_of(&b, "C");
+        kent_load_case *shut = &loads.fittings[c].cases[1];
+        kent_restraints *r = NULL;
+        kent_error err = {0};
+        shut->above_90_percent = peaks[i].lasts;
+        shut->step = peaks[i].step;
+        assert_int_equal(kent_restraint_size(b.model, &loads, &r, &err), KENT_OK);
+        const kent_holding *h = &r->fittings[c];
+        assert_int_equal(h->governing, 1);
+        if (peaks[i].says) kent_hand_expect(h, peaks[i].says);
+        assert_true(kent_hand_says(h, "peak is short") == (peaks[i].says != NULL));
+        kent_hand_clear(&loads);
+        finish(&b, r);
+    }
+}
+
 /* 300 kPa on 19 kN/m3 at 1.81 m is 8.7 times the weight of the soil above; with half of
  * it inside as a factor the same again. */
 static void bearing_that_the_depth_cannot_give_is_doubted(void **state)
@@ -713,6 +747,7 @@ int main(void)
         cmocka_unit_test(a_pull_the_other_way_is_said),
         cmocka_unit_test(an_outlet_valve_does_not_push_along_its_trench),
         cmocka_unit_test(a_surge_above_the_test_pressure_is_said),
+        cmocka_unit_test(a_governing_peak_of_a_knock_or_of_one_step_is_said),
         cmocka_unit_test(bearing_that_the_depth_cannot_give_is_doubted),
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),
         cmocka_unit_test(a_thrust_of_less_than_half_a_kilonewton_needs_nothing),

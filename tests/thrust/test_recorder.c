@@ -248,6 +248,8 @@ static void a_peak_of_one_instant_lasts_one_step(void **state)
     kent_made_take(&t, &n, 0, 0.02, 64);
     kent_net_finish(&n);
     assert_close(kent_net_case(&n, "P1", "first")->above_90_percent, 0.02, 1e-12);
+    assert_true(kent_net_case(&n, "P1", "first")->step == 0.02);
+    assert_true(isnan(kent_net_case(&n, "P1", "steady")->step));
     kent_net_clear(&n);
 }
 
