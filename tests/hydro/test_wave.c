@@ -52,8 +52,10 @@ static void ductile_iron_table_is_met(void **state)
     for (size_t i = 0; i < rows; i++) {
         const double wall = IRON[i].wall * INCH;
         const double bore = IRON[i].outside * INCH - 2.0 * wall;
+        /* 0.3 %, and what rounding to whole ft/s and moduli fitted to three figures
+         * leave of it: 6 in class 50 is 0.3002 % off. */
         assert_close(bare_speed(bore, wall, iron, density, bulk) / FOOT,
-                     IRON[i].speed_ft, 0.0031);
+                     IRON[i].speed_ft, 0.003005);
     }
     /* 12 in class 52, 4 in class 56, 20 in class 50 */
     assert_close(bare_speed(12.46 * INCH, 0.37 * INCH, iron, density, bulk) / FOOT,
@@ -120,8 +122,7 @@ static void axial_support_counts_in_steel(void **state)
     }
 }
 
-/* The same, in a thick concrete pipe, order as printed there: upstream, throughout,
- * joints. */
+/* The same forms in a thick concrete pipe (uncracked); worked out apart. */
 static void thick_walls_slow_the_wave_in_concrete(void **state)
 {
     (void)state;
@@ -138,6 +139,7 @@ static void thick_walls_slow_the_wave_in_concrete(void **state)
     }
 }
 
+/* Steel and concrete side by side, by the ratio of their moduli; worked out apart. */
 static void reinforced_concrete_counts_as_one_wall_of_steel(void **state)
 {
     (void)state;

@@ -242,6 +242,10 @@ static const char *const KEYS[] = {
     "cautions[]",
 };
 
+/* The same of lists that may be empty: one element at least must be seen in all. */
+static const char *const LEG_KEYS[] = {"direction", "length_m", "pipes"};
+static const char *const FACE_KEYS[] = {"width_m", "height_m", "thickness_m"};
+
 /* Fails unless path leads somewhere from value in every branch. As deep as the path. */
 /* NOLINTNEXTLINE(misc-no-recursion) */
 static void walk(const json_t *value, const char *path, const char *whole)
@@ -286,6 +290,34 @@ static void every_key_of_the_results_is_there(void **state)
     for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
         walk(root, KEYS[i], KEYS[i]);
     }
+    json_decref(root);
+    kent_mixed_clear(&mixed);
+}
+
+static void legs_and_faces_have_their_keys(void **state)
+{
+    (void)state;
+    kent_mixed mixed = kent_mixed_new(false);
+    json_t *root = written(mixed.results);
+    size_t index = 0, legs = 0, faces = 0, k = 0;
+    json_t *fitting = NULL, *leg = NULL;
+    json_array_foreach(json_object_get(root, "fittings"), index, fitting)
+    {
+        const json_t *face = json_object_get(json_object_get(fitting, "block"), "face");
+        json_array_foreach(json_object_get(fitting, "restrained"), k, leg)
+        {
+            for (size_t i = 0; i < sizeof LEG_KEYS / sizeof LEG_KEYS[0]; i++) {
+                walk(leg, LEG_KEYS[i], "restrained");
+            }
+            legs++;
+        }
+        if (json_is_null(face)) continue;
+        for (size_t i = 0; i < sizeof FACE_KEYS / sizeof FACE_KEYS[0]; i++) {
+            walk(face, FACE_KEYS[i], "face");
+        }
+        faces++;
+    }
+    assert_true(legs > 0 && faces > 0);
     json_decref(root);
     kent_mixed_clear(&mixed);
 }
@@ -533,6 +565,7 @@ int main(void)
         cmocka_unit_test(every_line_of_a_hand_calculation_can_be_worked_out_again),
         cmocka_unit_test(check_lists_all_that_was_understood),
         cmocka_unit_test(every_key_of_the_results_is_there),
+        cmocka_unit_test(legs_and_faces_have_their_keys),
         cmocka_unit_test(a_number_comes_back_with_every_bit),
         cmocka_unit_test(a_value_that_is_not_there_is_null),
         cmocka_unit_test(the_summary_has_a_record_for_each_fitting),

@@ -105,8 +105,8 @@ static void linear_closures_give_allievis_heads(void **state)
     }
 }
 
-/* h/H0 = n/2 + sqrt(n + n^2/4) + 1 - ... as printed: limit head 1.22100 for
- * n = (rho/theta)^2 = 0.04; reached late in a slow closure. Allievi, 1925. */
+/* Rise over H0 tends to n/2 + sqrt(n + n^2/4) with n = (rho/theta)^2: for n = 0.04 the
+ * head to 1.22100 H0, late in a slow closure. Allievi, 1925; worked out apart. */
 static void a_slow_closure_tends_to_the_limit_head(void **state)
 {
     (void)state;
@@ -118,7 +118,8 @@ static void a_slow_closure_tends_to_the_limit_head(void **state)
     assert_true(when > 20.0);
 }
 
-/* L 1000 m, a 1000 m/s, V0 1 m/s, H0 100 m: the same equations in SI. */
+/* L 1000 m, a 1000 m/s, V0 1 m/s, H0 100 m: Allievi's equations in SI, worked out apart
+ * from the program. */
 static void closures_of_a_kilometre_give_the_exact_highest_heads(void **state)
 {
     (void)state;
