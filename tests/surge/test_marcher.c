@@ -567,6 +567,35 @@ static void watches_off_their_span_are_refused(void **state)
 }
 
 /* A crest near the level: closing the valve upstream of it pulls its head down. */
+/* At rest, a metre higher at each node. Water of 1000 kg/m3 that boils at 1705.7 Pa
+ * under 101325 Pa does so (101325 - 1705.7)/(1000 x 9.80665) = 10.158 m above its head.
+ */
+static void the_vapour_limit_is_met_to_the_centimetre(void **state)
+{
+    (void)state;
+    static const struct {
+        double head; /* m */
+        size_t below;
+    } rows[] = {{3.85, 6},
+                {3.83, 7}}; /* nodes above 14.008 m and 13.988 m of 0 .. 20 */
+    for (size_t i = 0; i < 2; i++) {
+        kent_build b = kent_build_new();
+        bool touched[2] = {false};
+        b.model->water.vapour_pressure = 1705.7;
+        kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+        kent_build_point(&b, "D", 1000.0, 0.0, 20.0);
+        kent_build_pipe(&b, "main", "R D", 0.5, 1000.0);
+        kent_build_fixed_level(&b, "R", rows[i].head);
+        b.model->solver.min_reaches = 20;
+        march m = march_new(&b, 20.0, -1, WATCHES, 1, 1);
+        assert_int_equal(m.grid->reaches[0], 20);
+        assert_int_equal(kent_marcher_below_vapour(m.marcher, touched), rows[i].below);
+        assert_true(touched[1]);
+        march_clear(&m);
+        kent_build_clear(&b);
+    }
+}
+
 static void heads_below_the_vapour_limit_are_counted_and_placed(void **state)
 {
     (void)state;
@@ -613,6 +642,7 @@ int main(void)
         cmocka_unit_test(a_stiff_span_is_swept_implicitly_and_keeps_its_steady_state),
         cmocka_unit_test(a_reach_too_stiff_for_either_is_refused),
         cmocka_unit_test(watches_off_their_span_are_refused),
+        cmocka_unit_test(the_vapour_limit_is_met_to_the_centimetre),
         cmocka_unit_test(heads_below_the_vapour_limit_are_counted_and_placed),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
