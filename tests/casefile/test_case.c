@@ -74,8 +74,12 @@ static void defaults_are_those_of_the_table_and_are_said(void **state)
     assert_non_null(strstr(assumed(m, "water temperature"), "15 degC"));
     assert_close(m->barometric, kent_barometric_pressure(0.0), 1e-15);
     assert_non_null(assumed(m, "barometric pressure"));
+    assert_close(m->gravity, 9.80665, 1e-15);
     assert_close(m->gravity, strtod(kent_key_find("site", "gravity")->fallback, NULL),
                  1e-15);
+    assert_close(m->solver.wave_speed_tolerance, 0.02, 1e-15);
+    assert_int_equal(m->solver.min_reaches, 20);
+    assert_int_equal(m->solver.history_rows, 20000);
     assert_close(
         m->solver.wave_speed_tolerance,
         strtod(kent_key_find("solver", "wave_speed_tolerance")->fallback, NULL), 1e-15);
