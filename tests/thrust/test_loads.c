@@ -266,6 +266,26 @@ static void the_loss_of_a_valve_pushes_it_along(void **state)
     kent_net_clear(&n);
 }
 
+/* Between pipes of two sizes each side keeps the pressure of its own head: what the
+ * stream regains or loses is the valve's affair. */
+static void a_valve_between_two_sizes_has_the_pressure_of_each_head(void **state)
+{
+    (void)state;
+    kent_build b = a_main();
+    b.model->pipes[0].inside_diameter = 0.3;
+    b.model->pipes[0].outside_diameter = 0.32;
+    kent_net n = kent_net_of(b);
+    kent_net_finish(&n);
+    const kent_instant *i = &kent_net_case(&n, "V", "steady")->worst[KENT_RESULTANT];
+    const int a = kent_build_span_of(&n.build, "A");
+    const kent_span *span = &n.model->spans[a];
+    const double before = n.steady->node_head[span->node[1]];
+    const double speed = n.steady->span_flow[a] / area(0.3);
+    assert_true(0.5 * RHO * speed * speed > 1000.0); /* Pa, that must not come in */
+    assert_close(i->balance.port[0].pressure, RHO * G * (before - 30.0), 1e-12);
+    kent_net_clear(&n);
+}
+
 /* The jet behind an outlet valve is left out: pressure and arriving stream push it on.
  */
 static void an_outlet_valve_is_pushed_out_of_the_pipes_end(void **state)
@@ -298,6 +318,31 @@ static void factors_follow_the_kind_of_case(void **state)
     assert_true(kent_net_case(&n, "L", "shut")->safety_factor == 1.1);
     assert_int_equal(kent_net_case(&n, "L", "shut")->kind, KENT_CASE_EXCEPTIONAL);
     kent_net_clear(&n);
+}
+
+static void each_class_of_scenario_has_its_own_factor(void **state)
+{
+    (void)state;
+    static const struct {
+        kent_class class_of;
+        kent_case_kind kind;
+    } ROWS[] = {{KENT_RECURRING, KENT_CASE_RECURRING},
+                {KENT_OCCASIONAL, KENT_CASE_OCCASIONAL},
+                {KENT_EXCEPTIONAL, KENT_CASE_EXCEPTIONAL}};
+    for (size_t i = 0; i < 3; i++) {
+        kent_build b = a_main();
+        b.model->scenarios[0].class_of = ROWS[i].class_of;
+        b.model->loads.factor[KENT_CASE_RECURRING] = 2.0;
+        b.model->loads.factor[KENT_CASE_OCCASIONAL] = 1.6;
+        b.model->loads.factor[KENT_CASE_EXCEPTIONAL] = 1.1;
+        kent_net n = kent_net_of(b);
+        take_two(&n, 90.0, 95.0);
+        kent_net_finish(&n);
+        const kent_load_case *c = kent_net_case(&n, "L", "shut");
+        assert_int_equal(c->kind, ROWS[i].kind);
+        assert_true(c->safety_factor == b.model->loads.factor[ROWS[i].kind]);
+        kent_net_clear(&n);
+    }
 }
 
 static void weight_counts_only_where_it_is_given(void **state)
@@ -403,8 +448,10 @@ int main(void)
         cmocka_unit_test(a_closed_valve_is_pressed_from_either_side),
         cmocka_unit_test(a_closed_valve_takes_the_factor_of_what_presses),
         cmocka_unit_test(the_loss_of_a_valve_pushes_it_along),
+        cmocka_unit_test(a_valve_between_two_sizes_has_the_pressure_of_each_head),
         cmocka_unit_test(an_outlet_valve_is_pushed_out_of_the_pipes_end),
         cmocka_unit_test(factors_follow_the_kind_of_case),
+        cmocka_unit_test(each_class_of_scenario_has_its_own_factor),
         cmocka_unit_test(weight_counts_only_where_it_is_given),
         cmocka_unit_test(a_sudden_closure_presses_by_joukowskys_head),
         cmocka_unit_test(azimuths_run_clockwise_from_north),
