@@ -264,6 +264,39 @@ static void bearing_that_the_depth_cannot_give_is_doubted(void **state)
     r = kent_hand_size(&b, TEST, 1);
     assert_false(kent_hand_says(holding_of(&b, r, "C"), "passive coefficient"));
     finish(&b, r);
+
+    for (int over = 0; over < 2; over++) { /* five times is the limit */
+        b = main_of_five();
+        b.model->soils[0].allowable_bearing = (over ? 5.01 : 4.99) * 19e3 * 1.81;
+        kent_build_derive(&b);
+        r = kent_hand_size(&b, TEST, 1);
+        assert_true(kent_hand_says(holding_of(&b, r, "C"), "passive coefficient") ==
+                    (over > 0));
+        finish(&b, r);
+    }
+}
+
+/* CIRIA Report 128, Guide to the design of thrust blocks (1994), stops at about 1000
+ * kN. */
+static void concrete_beyond_a_thousand_kilonewtons_wants_designing(void **state)
+{
+    (void)state;
+    const double per_pascal = 2.0 * 0.25 * PI * 0.62 * 0.62 * sin(11.25 * DEGREE);
+    for (int over = 0; over < 2; over++) {
+        const double load = over ? 1010e3 : 990e3; /* N, factored */
+        const kent_hand_case cases[] = {
+            {"test", KENT_CASE_TEST, 1.5, load / 1.5 / per_pascal}};
+        kent_build b = main_of_five();
+        b.model->soils[0].allowable_bearing = 1e6;
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, cases, 1);
+        const kent_holding *h = holding_of(&b, r, "C");
+        assert_true(h->held);
+        assert_close(h->design_thrust, load, 1e-9);
+        assert_true(kent_hand_says(h, "concrete itself must be designed") ==
+                    (over > 0));
+        finish(&b, r);
+    }
 }
 
 /* ---- nothing needed, nothing asked -------------------------------------------------
@@ -548,6 +581,24 @@ static void sleeves_ground_water_and_crests_take_longer_lengths(void **state)
     assert_true(lifted > 1.5 * pressed); /* the trench side helps the sag alone */
 }
 
+/* Soil and pipe are buoyed: 19 kN/m3 and the pipe's weight less the water's. */
+static void in_ground_water_the_length_follows_from_buoyed_weights(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    b.model->ground.water_table = 2.0; /* m: above the bottom of the pipe at 2.12 m */
+    const double water = b.model->rules.water_unit_weight; /* N/m3 */
+    const double bore = 1000.0 * 9.80665 * 0.25 * PI * 0.36;
+    const double iron = PI * 0.61 * 0.01 * 7050.0 * 9.80665;
+    const double weight = 2.0 * (19e3 - water) * 1.5 * 0.62 + iron + bore -
+                          water * 0.25 * PI * 0.62 * 0.62; /* N/m */
+    const double side = 0.6 * 3.0 * (19e3 - water) * (1.5 + 0.31) * 0.62;
+    const double length = 1.5 * 1.0e6 * 0.25 * PI * 0.62 * 0.62 * tan(11.25 * DEGREE) /
+                          (weight * tan(22.5 * DEGREE) + 0.5 * side);
+
+    assert_close(length_at_c(&b), length, 1e-9);
+}
+
 static void missing_soil_values_are_named_and_no_length_is_given(void **state)
 {
     (void)state;
@@ -749,6 +800,7 @@ int main(void)
         cmocka_unit_test(a_surge_above_the_test_pressure_is_said),
         cmocka_unit_test(a_governing_peak_of_a_knock_or_of_one_step_is_said),
         cmocka_unit_test(bearing_that_the_depth_cannot_give_is_doubted),
+        cmocka_unit_test(concrete_beyond_a_thousand_kilonewtons_wants_designing),
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),
         cmocka_unit_test(a_thrust_of_less_than_half_a_kilonewton_needs_nothing),
         cmocka_unit_test(no_restraint_on_purpose_is_said_but_not_counted),
@@ -763,6 +815,7 @@ int main(void)
         cmocka_unit_test(a_bend_s_length_is_rounded_up_to_whole_pipes),
         cmocka_unit_test(beyond_a_right_angle_a_bend_draws_its_legs_along),
         cmocka_unit_test(sleeves_ground_water_and_crests_take_longer_lengths),
+        cmocka_unit_test(in_ground_water_the_length_follows_from_buoyed_weights),
         cmocka_unit_test(missing_soil_values_are_named_and_no_length_is_given),
         cmocka_unit_test(adhesion_is_not_asked_for_where_there_is_no_cohesion),
         cmocka_unit_test(soil_without_any_friction_gives_no_length),
