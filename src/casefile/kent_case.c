@@ -189,10 +189,6 @@ static void fill_solver(kent_filling *f)
         s->place =
             kent_tree_place(f->reader.tree, kent_record_field(&r, "time_step")->twig);
     }
-    if (kent_record_has(&r, "time_step")) {
-        s->place =
-            kent_tree_place(f->reader.tree, kent_record_field(&r, "time_step")->twig);
-    }
     const double reaches = kent_record_number_or(&r, "min_reaches", s->min_reaches);
     const double rows = kent_record_number_or(&r, "history_rows", s->history_rows);
     if (!r.sound) return;

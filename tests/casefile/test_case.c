@@ -103,6 +103,121 @@ static void defaults_are_those_of_the_table_and_are_said(void **state)
     kent_catalogue_free(c);
 }
 
+/* The sound case with one piece replaced by a word in its frame ("class = \"%s\";"). */
+static kent_model *read_worded(const kent_catalogue *c, const char *from,
+                               const char *frame, const char *word)
+{
+    char piece[256];
+    const int length = snprintf(piece, sizeof piece, frame, word); /* NOLINT: ours */
+    assert_in_range(length, 1, sizeof piece - 1);
+    char *text = replaced(SOUND_CASE, from, piece);
+    kent_model *m = read_sound(c, text);
+    free(text);
+    return m;
+}
+
+static void words_become_what_they_say(void **state)
+{
+    (void)state;
+    static const char *const JOINTS[] = {
+        [KENT_PUSH_ON] = "push-on", [KENT_MECHANICAL] = "mechanical",
+        [KENT_FLANGED] = "flanged", [KENT_WELDED] = "welded",
+        [KENT_FUSED] = "fused",     [KENT_RESTRAINED] = "restrained"};
+    static const char *const SUPPORTS[] = {[KENT_FLEXIBLE_JOINTS] = "flexible-joints",
+                                           [KENT_FIXED_UPSTREAM] = "fixed-upstream",
+                                           [KENT_FIXED_THROUGHOUT] =
+                                               "fixed-throughout"};
+    static const char *const CLASSES[] = {[KENT_RECURRING] = "recurring",
+                                          [KENT_OCCASIONAL] = "occasional",
+                                          [KENT_EXCEPTIONAL] = "exceptional"};
+    static const char *const FRICTIONS[] = {[KENT_SURGE_NONE] = "none",
+                                            [KENT_SURGE_CONSTANT] = "constant",
+                                            [KENT_SURGE_QUASI_STEADY] = "quasi-steady"};
+    static const char *const RESTRAINTS[] = {[KENT_THRUST_BLOCK] = "thrust-block",
+                                             [KENT_ANCHOR_BLOCK] = "anchor-block",
+                                             [KENT_RESTRAINED_JOINTS] =
+                                                 "restrained-joints",
+                                             [KENT_NO_RESTRAINT] = "none"};
+    kent_catalogue *c = read_catalogue();
+
+    for (int i = 0; i < 6; i++) {
+        const bool stiff = i == KENT_FLANGED || i == KENT_WELDED || i == KENT_FUSED;
+        kent_model *m =
+            read_worded(c, "joint = \"push-on\";", "joint = \"%s\";", JOINTS[i]);
+        assert_int_equal(m->pipes[0].joint, i);
+        assert_int_equal(m->pipes[0].axial_support,
+                         stiff ? KENT_FIXED_THROUGHOUT : KENT_FLEXIBLE_JOINTS);
+        kent_model_free(m);
+    }
+    for (int i = 0; i < 3; i++) {
+        kent_model *m = read_worded(c, "joint = \"push-on\";",
+                                    "axial_support = \"%s\";", SUPPORTS[i]);
+        assert_int_equal(m->pipes[0].axial_support, i);
+        kent_model_free(m);
+        m = read_worded(c, "class = \"occasional\";", "class = \"%s\";", CLASSES[i]);
+        assert_int_equal(m->scenarios[0].class_of, i);
+        kent_model_free(m);
+        m = read_worded(
+            c, "ground =", "solver = { friction = \"%s\"; };\nground =", FRICTIONS[i]);
+        assert_int_equal(m->solver.friction, i);
+        kent_model_free(m);
+    }
+    for (int i = 0; i < 4; i++) {
+        kent_model *m = read_worded(
+            c, "ground =",
+            "fittings = ( { at = \"B1\"; restraint = \"%s\"; } );\nground =",
+            RESTRAINTS[i]);
+        assert_int_equal(m->notes[0].restraint, i);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+static void each_law_of_friction_is_read_with_its_number(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys;
+        kent_friction_law law;
+        double coefficient;
+    } ROWS[] = {{"roughness = \"0.2 mm\";", KENT_COLEBROOK_WHITE, 2e-4},
+                {"hazen_williams_c = 130;", KENT_HAZEN_WILLIAMS, 130.0},
+                {"manning_n = 0.011;", KENT_MANNING, 0.011},
+                {"friction_factor = 0.02;", KENT_DARCY_FIXED, 0.02}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        kent_model *m = read_worded(c, "joint = \"push-on\";", "%s", ROWS[i].keys);
+        assert_int_equal(m->pipes[0].friction, ROWS[i].law);
+        assert_close(m->pipes[0].friction_coefficient, ROWS[i].coefficient, 1e-12);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+/* Capacity E of Q = E sqrt(head lost), m^2.5/s: K on 300 mm; Kv in m3/h at 1 bar; Cv in
+ * US gallon/min at 1 psi, water of 1000 kg/m3. The butterfly's own K is 0.24. */
+static void each_way_to_state_a_valve_gives_its_capacity(void **state)
+{
+    (void)state;
+    const double g = 9.80665, bore = 0.25 * acos(-1.0) * 0.09; /* m/s2, m2 */
+    const struct {
+        const char *keys;
+        double capacity;
+    } rows[] = {
+        {"loss = 2.0;", bore * sqrt(2.0 * g / 2.0)},
+        {"kv = 600;", 600.0 / 3600.0 / sqrt(1e5 / (1000.0 * g))},
+        {"cv = 600;", 600.0 * 3.785411784e-3 / 60.0 / sqrt(6894.757293168 / 1e3 / g)},
+        {"", bore * sqrt(2.0 * g / 0.24)}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        kent_model *m = read_worded(c, "flow = \"100 L/s\";", "%s ", rows[i].keys);
+        assert_close(m->valves[0].capacity, rows[i].capacity, 1e-9);
+        assert_true(isnan(m->valves[0].flow));
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
 static void what_is_stated_is_not_noted_as_assumed(void **state)
 {
     (void)state;
@@ -199,11 +314,15 @@ static void factors_by_load_case_replace_the_one_factor(void **state)
     kent_catalogue *c = read_catalogue();
     char *text =
         replaced(SOUND_CASE, "safety_factor = 1.5;",
-                 "safety_factor = 1.5; factors = { test = 1.2; exceptional = 1.1; };");
+                 "safety_factor = 1.5; factors = { test = 1.2; exceptional = 1.1; "
+                 "steady = 1.3; recurring = 2.0; occasional = 1.6; };");
     kent_model *m = read_sound(c, text);
     assert_close(m->loads.factor[KENT_CASE_TEST], 1.2, 1e-15);
     assert_close(m->loads.factor[KENT_CASE_EXCEPTIONAL], 1.1, 1e-15);
     assert_close(m->loads.factor[KENT_CASE_STATIC], 1.5, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_STEADY], 1.3, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_RECURRING], 2.0, 1e-15);
+    assert_close(m->loads.factor[KENT_CASE_OCCASIONAL], 1.6, 1e-15);
     kent_model_free(m);
     free(text);
     kent_catalogue_free(c);
@@ -316,6 +435,9 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(values_arrive_in_si),
         cmocka_unit_test(defaults_are_those_of_the_table_and_are_said),
+        cmocka_unit_test(words_become_what_they_say),
+        cmocka_unit_test(each_law_of_friction_is_read_with_its_number),
+        cmocka_unit_test(each_way_to_state_a_valve_gives_its_capacity),
         cmocka_unit_test(what_is_stated_is_not_noted_as_assumed),
         cmocka_unit_test(a_case_may_override_single_design_rules),
         cmocka_unit_test(a_case_in_US_units_has_blocks_in_whole_inches),
