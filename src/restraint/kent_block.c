@@ -160,12 +160,13 @@ static void base_size(const kent_rules *rules, const kent_site *site,
     const kent_face plan = {.width = out->width, .height = out->height};
     out->thickness = kent_block_thickness(rules, plan, site->diameter);
     if (demand->load[KENT_UPWARD] > 0.0) {
-        const double under = site->cover + site->diameter + out->thickness;
+        const double dry = rules->concrete_unit_weight;
+        const double lift = demand->load[KENT_UPWARD] / (out->width * out->height);
+        const double deep = fmax(out->thickness, kent_side_up(lift / dry, step));
+        const double under = site->cover + site->diameter + deep;
         const double weight = kent_site_concrete(site, rules, under);
-        const double needed = demand->load[KENT_UPWARD] / weight;
-        out->submerged = weight < rules->concrete_unit_weight;
-        out->thickness = fmax(out->thickness,
-                              kent_side_up(needed / (out->width * out->height), step));
+        out->submerged = weight < dry;
+        out->thickness = fmax(out->thickness, kent_side_up(lift / weight, step));
     }
     out->volume = out->width * out->height * out->thickness;
 }

@@ -161,6 +161,36 @@ static void a_crest_in_ground_water_takes_more_concrete(void **state)
     assert_close(volume_at_b(&wet) / without, 23.0 / (23.0 - 9.80665), 0.05);
 }
 
+/* Its deepest face: of a gravity block half its height below the axis, of a base its
+ * thickness below the pipe. A centimetre decides. */
+static void water_counts_from_the_bottom_of_a_block_up(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {
+        {"test", KENT_CASE_TEST, 1.5, 0.6e6},
+        {"shut", KENT_CASE_OCCASIONAL, 1.5, -0.04e6}}; /* lifts the sag */
+    const double rise = 200.0 * tan(5.625 * DEGREE);
+    for (int way = -1; way <= 1; way += 2) {
+        double bottom = 9.0; /* m: dry to begin with */
+        for (int k = 0; k < 3; k++) {
+            kent_build b = main_that_turns(0.0, way * rise);
+            b.model->ground.water_table = bottom + (k == 1 ? -0.01 : 0.01);
+            kent_build_derive(&b);
+            kent_restraints *r = kent_hand_size(&b, cases, 2);
+            const kent_block *block = &holding_of(&b, r, "B")->block;
+            assert_int_equal(block->type,
+                             way > 0 ? KENT_BLOCK_GRAVITY : KENT_BLOCK_BASE);
+            assert_true(block->submerged == (k == 1));
+            if (k == 0) {
+                bottom = way > 0 ? 1.5 + 0.31 + 0.5 * block->height
+                                 : 1.5 + 0.62 + block->thickness;
+            }
+            kent_restraints_free(r);
+            kent_build_clear(&b);
+        }
+    }
+}
+
 static void a_sag_gets_a_base_on_the_ground_below(void **state)
 {
     (void)state;
@@ -177,6 +207,8 @@ static void a_sag_gets_a_base_on_the_ground_below(void **state)
     assert_true(h->block.width * h->block.height >=
                 h->block.bearing_area * (1.0 - 1e-5));
     assert_true(h->block.bearing_pressure <= 100e3 * (1.0 + 1e-5));
+    assert_close(h->utilisation,
+                 1.5 * down / (h->block.width * h->block.height * 100e3), 1e-9);
     assert_close(h->block.bearing_pressure, 100e3 * h->utilisation, 1e-12);
     kent_restraints_free(r);
     kent_build_clear(&b);
@@ -457,6 +489,7 @@ int main(void)
         cmocka_unit_test(weaker_soil_never_gets_a_smaller_face),
         cmocka_unit_test(a_crest_gets_a_weight_that_beats_the_lift),
         cmocka_unit_test(a_crest_in_ground_water_takes_more_concrete),
+        cmocka_unit_test(water_counts_from_the_bottom_of_a_block_up),
         cmocka_unit_test(a_sag_gets_a_base_on_the_ground_below),
         cmocka_unit_test(a_sag_that_suction_lifts_hard_gets_a_weight_not_a_pillar),
         cmocka_unit_test(a_turn_in_plan_and_profile_gets_a_weight_and_a_face),
