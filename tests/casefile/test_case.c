@@ -103,6 +103,94 @@ static void defaults_are_those_of_the_table_and_are_said(void **state)
     kent_catalogue_free(c);
 }
 
+/* Without coordinates, and with a number at every key that a solver reads. */
+static const char NUMBERS_CASE[] =
+    "format = 1;\n"
+    "points = ( { id = \"R\"; z = \"50 m\"; },\n"
+    "  { id = \"K\"; z = \"30 m\"; cover = \"1.3 m\"; water_table = \"0.9 m\"; },\n"
+    "  { id = \"W\"; z = \"25 m\"; }, { id = \"E\"; z = \"20 m\"; } );\n"
+    "pipes = (\n"
+    "  { id = \"C\"; route = [ \"W\", \"E\" ]; length = \"90 m\"; pipe_class = "
+    "\"DI-EN545-C40-DN300\"; },\n"
+    "  { id = \"A\"; route = [ \"R\", \"K\" ]; length = \"310 m\"; material = "
+    "\"steel\";\n"
+    "    outside_diameter = \"500 mm\"; wall_thickness = \"8 mm\"; lining_thickness = "
+    "\"5 mm\";\n"
+    "    poisson_ratio = 0.31; wall_theory = \"thin\"; joint = \"welded\"; loss = "
+    "1.75;\n"
+    "    pressure_rating = \"16 bar\"; pipe_length = \"6 m\"; joint_deflection = \"2 "
+    "deg\"; },\n"
+    "  { id = \"B\"; route = [ \"K\", \"W\" ]; length = \"190 m\"; wave_speed = "
+    "\"1180 m/s\";\n"
+    "    outside_diameter = \"500 mm\"; inside_diameter = \"470 mm\"; roughness = "
+    "\"0.1 mm\"; } );\n"
+    "fixed_levels = ( { at = \"R\"; level = \"80 m\"; loss = 0.5; } );\n"
+    "outflows = ( { at = \"E\"; flow = \"18 L/s\"; pressure_dependent = true; "
+    "full_pressure = \"2 bar\"; } );\n"
+    "valves = ( { id = \"V\"; at = \"W\"; type = \"linear\"; size = \"400 mm\"; loss "
+    "= 0.2; opening = 0.6; } );\n"
+    "soils = ( { id = \"till\"; allowable_bearing = \"150 kPa\"; factor_inside = "
+    "2.0;\n"
+    "  vertical_bearing = \"120 kPa\"; unit_weight = \"19 kN/m^3\"; friction_angle = "
+    "\"30 deg\";\n"
+    "  cohesion = \"4 kPa\"; friction_ratio = 0.7; adhesion_ratio = 0.6; "
+    "passive_ratio = 0.4; } );\n"
+    "ground = { soil = \"till\"; cover = \"1.2 m\"; water_table = \"3 m\"; wrapped = "
+    "true; };\n"
+    "fittings = ( { at = \"K\"; weight = \"25 kN\"; face = \"0.7 m\"; cover = \"1.4 "
+    "m\";\n"
+    "  angle = \"30 deg\"; orientation = \"sag\"; } );\n"
+    "loads = { static_level = \"85 m\"; safety_factor = 1.5; };\n"
+    "solver = { time_step = \"0.01 s\"; grid_check = false; history_rows = 500; };\n";
+
+static void every_number_of_a_case_arrives(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, NUMBERS_CASE);
+    const kent_pipe *a = &m->pipes[1], *b = &m->pipes[2];
+    assert_close(a->inside_diameter, 0.500 - 2.0 * (0.008 + 0.005), 1e-12);
+    assert_close(a->length, 310.0, 1e-15);
+    assert_close(a->poisson, 0.31, 1e-15);
+    assert_close(a->modulus, 207e9, 1e-12);
+    assert_true(a->thin_wall && !b->thin_wall);
+    assert_close(a->loss, 1.75, 1e-15);
+    assert_close(a->pressure_rating, 16e5, 1e-12);
+    assert_close(a->laying_length, 6.0, 1e-15);
+    assert_close(a->joint_deflection, 2.0 * acos(-1.0) / 180.0, 1e-12);
+    assert_close(b->wave_speed, 1180.0, 1e-15);
+    assert_close(b->inside_diameter, 0.470, 1e-15);
+    assert_close(m->fixed_levels[0].loss, 0.5, 1e-15);
+    assert_true(m->outflows[0].pressure_dependent);
+    assert_close(m->outflows[0].flow, 0.018, 1e-12);
+    assert_close(m->outflows[0].full_pressure, 2e5, 1e-12);
+    assert_close(m->valves[0].opening, 0.6, 1e-15);
+    assert_close(m->valves[0].size, 0.4, 1e-15);
+    assert_true(isnan(m->valves[0].discharge_level));
+    const kent_soil *s = &m->soils[0];
+    assert_close(s->vertical_bearing, 120e3, 1e-12);
+    assert_close(s->friction_angle, acos(-1.0) / 6.0, 1e-12);
+    assert_close(s->cohesion, 4e3, 1e-12);
+    assert_close(s->friction_ratio, 0.7, 1e-15);
+    assert_close(s->adhesion_ratio, 0.6, 1e-15);
+    assert_close(s->passive_ratio, 0.4, 1e-15);
+    assert_true(m->ground.wrapped);
+    assert_close(m->ground.water_table, 3.0, 1e-15);
+    assert_close(m->points[1].cover, 1.3, 1e-15);
+    assert_close(m->points[1].water_table, 0.9, 1e-15);
+    assert_close(m->notes[0].weight, 25e3, 1e-12);
+    assert_close(m->notes[0].face, 0.7, 1e-15);
+    assert_close(m->notes[0].cover, 1.4, 1e-15);
+    assert_close(m->notes[0].angle, acos(-1.0) / 6.0, 1e-12);
+    assert_int_equal(m->notes[0].orientation, KENT_SAG);
+    assert_close(m->loads.static_level, 85.0, 1e-15);
+    assert_close(m->solver.time_step, 0.01, 1e-15);
+    assert_false(m->solver.grid_check);
+    assert_int_equal(m->solver.history_rows, 500);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
 /* The sound case with one piece replaced by a word in its frame ("class = \"%s\";"). */
 static kent_model *read_worded(const kent_catalogue *c, const char *from,
                                const char *frame, const char *word)
@@ -435,6 +523,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(values_arrive_in_si),
         cmocka_unit_test(defaults_are_those_of_the_table_and_are_said),
+        cmocka_unit_test(every_number_of_a_case_arrives),
         cmocka_unit_test(words_become_what_they_say),
         cmocka_unit_test(each_law_of_friction_is_read_with_its_number),
         cmocka_unit_test(each_way_to_state_a_valve_gives_its_capacity),
