@@ -237,8 +237,7 @@ static void fill_port(const kent_record *record, double face, kent_port *p)
 static void check_flows(kent_filling *f, kent_record *record,
                         const kent_fitting_note *n)
 {
-    static const double TOLERANCE =
-        1e-3; /* of the largest: figures given are rounded */
+    static const double TOLERANCE = 1e-6; /* of the largest, as the model has it */
     double sum = 0.0;
     double most = 0.0;
     for (size_t i = 0; i < n->port_count; i++) {
