@@ -70,11 +70,30 @@ static void solve_dead(const kent_ends *e, const kent_run *run, kent_line line)
     }
 }
 
+/* Inlined with a constant number of tips where most junctions are. */
+static inline __attribute__((always_inline)) void
+solve_alike(const kent_tip *tip, size_t tips, size_t count, kent_line line)
+{
+    for (size_t i = 0; i < count; i++, tip += tips) {
+        send_back(tip, tips, arriving(tip, tips, line), line);
+    }
+}
+
 static void solve_junction(const kent_ends *e, const kent_run *run, kent_line line)
 {
     const kent_tip *tip = e->tips + e->knots[run->first].tip_first;
-    for (size_t i = 0; i < run->count; i++, tip += run->tip_count) {
-        send_back(tip, run->tip_count, arriving(tip, run->tip_count, line), line);
+    switch (run->tip_count) {
+    case 2:
+        solve_alike(tip, 2, run->count, line);
+        break;
+    case 3:
+        solve_alike(tip, 3, run->count, line);
+        break;
+    case 4:
+        solve_alike(tip, 4, run->count, line);
+        break;
+    default:
+        solve_alike(tip, run->tip_count, run->count, line);
     }
 }
 
