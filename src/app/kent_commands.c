@@ -31,8 +31,7 @@ static void session_close(session *s)
     kent_catalogue_free(s->catalogue);
 }
 
-/* ---- standard error ---------------------------------------------------------------
- */
+/* ---- standard error -------------------------------------------------------------- */
 
 static kent_exit exit_of(kent_status status)
 {
@@ -102,8 +101,7 @@ static void say_unknown(const char *kind, const char *given, const char *const *
     (void)fprintf(stderr, "%s\n", count > NAMED ? " and others" : "");
 }
 
-/* ---- reading ----------------------------------------------------------------------
- */
+/* ---- reading --------------------------------------------------------------------- */
 
 static kent_exit read_catalogue(session *s)
 {
@@ -212,8 +210,7 @@ static kent_exit do_job(session *s)
     return status ? fail(s, status) : KENT_EXIT_DONE;
 }
 
-/* ---- writing ----------------------------------------------------------------------
- */
+/* ---- writing --------------------------------------------------------------------- */
 
 static kent_status print_results(const session *s, kent_text *text)
 {
@@ -275,8 +272,7 @@ static kent_exit write_results(session *s)
     return KENT_EXIT_DONE;
 }
 
-/* ---- the commands -----------------------------------------------------------------
- */
+/* ---- the commands ---------------------------------------------------------------- */
 
 static kent_exit command_run(session *s)
 {

@@ -10,8 +10,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* ---- the commands -----------------------------------------------------------------
- */
+/* ---- the commands ---------------------------------------------------------------- */
 
 /* Bits of what was given, to refuse an option that a command does not have. */
 enum {
@@ -89,8 +88,7 @@ static const struct argp_option OPTIONS[] = {
     {"version", 'V', NULL, 0, "Print the version", -1},
     {0}};
 
-/* ---- reading ----------------------------------------------------------------------
- */
+/* ---- reading --------------------------------------------------------------------- */
 
 typedef struct reading {
     kent_options *options;

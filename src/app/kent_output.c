@@ -7,8 +7,7 @@
 
 const char KENT_OUTPUT_MARKER[] = "results.json";
 
-/* ---- standard output --------------------------------------------------------------
- */
+/* ---- standard output ------------------------------------------------------------- */
 
 static int gather(void *to, const char *piece, size_t length)
 {
@@ -34,8 +33,7 @@ kent_status kent_output_print(const kent_text *text, kent_error *err)
                           cause != 0 ? strerror(cause) : "write error");
 }
 
-/* ---- the folder -------------------------------------------------------------------
- */
+/* ---- the folder ------------------------------------------------------------------ */
 
 char *kent_output_folder_name(const char *case_path)
 {

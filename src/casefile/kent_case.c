@@ -7,8 +7,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* ---- what was assumed -------------------------------------------------------------
- */
+/* ---- what was assumed ------------------------------------------------------------ */
 
 void kent_fill_assume(kent_filling *f, const char *what, const char *value,
                       const char *why)
@@ -27,8 +26,7 @@ void kent_fill_assume_value(kent_filling *f, const char *what, double si,
     kent_fill_assume(f, what, value, why);
 }
 
-/* ---- groups that stand once -------------------------------------------------------
- */
+/* ---- groups that stand once ------------------------------------------------------ */
 
 /* Reads the group under a key of the case; without one the record is empty. Returns
  * whether it was there. */
@@ -232,8 +230,7 @@ static void fill_rules(kent_filling *f)
     }
 }
 
-/* ---- lists ------------------------------------------------------------------------
- */
+/* ---- lists ----------------------------------------------------------------------- */
 
 enum { NO_SHELF = -1 };
 
@@ -301,8 +298,7 @@ static void fill_list(kent_filling *f, size_t which)
     }
 }
 
-/* ---- all --------------------------------------------------------------------------
- */
+/* ---- all ------------------------------------------------------------------------- */
 
 static kent_status copy_files(const kent_tree *tree, kent_model *m)
 {

@@ -5,8 +5,7 @@
 #include <stdio.h>
 #include <string.h>
 
-/* ---- scenarios --------------------------------------------------------------------
- */
+/* ---- scenarios ------------------------------------------------------------------- */
 
 enum { LAW_MOST = 1000 }; /* points of one opening law */
 
@@ -143,8 +142,7 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
     s->event_count = m->event_count - s->event_first;
 }
 
-/* ---- soils ------------------------------------------------------------------------
- */
+/* ---- soils ----------------------------------------------------------------------- */
 
 static const kent_soil UNKNOWN_SOIL = {.factor_inside = 1.0,
                                        .allowable_bearing = NAN,
@@ -212,8 +210,7 @@ int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char 
     return (int)m->soil_count++;
 }
 
-/* ---- fittings ---------------------------------------------------------------------
- */
+/* ---- fittings -------------------------------------------------------------------- */
 
 static void fill_port(const kent_record *record, double face, kent_port *p)
 {

@@ -24,8 +24,7 @@ void kent_fill_point(kent_filling *f, kent_record *record, size_t index)
     }
 }
 
-/* ---- a pipe -----------------------------------------------------------------------
- */
+/* ---- a pipe ---------------------------------------------------------------------- */
 
 static void fill_route(kent_filling *f, kent_record *record, kent_pipe *p)
 {
@@ -217,8 +216,7 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
     fill_joint(f, record, p);
 }
 
-/* ---- ends and devices -------------------------------------------------------------
- */
+/* ---- ends and devices ------------------------------------------------------------ */
 
 void kent_fill_fixed_level(kent_filling *f, kent_record *record, size_t index)
 {

@@ -11,8 +11,7 @@
 static const char *const FILES[] = {"materials.cfg", "pipes.cfg", "valves.cfg",
                                     "soils.cfg", "rules.cfg"};
 
-/* ---- values shared with cases -----------------------------------------------------
- */
+/* ---- values shared with cases ---------------------------------------------------- */
 
 static void replace(const kent_record *record, const char *key, double *value)
 {
@@ -92,8 +91,7 @@ bool kent_record_curve(kent_reader *r, kent_record *record, kent_valve_curve *ou
     return false;
 }
 
-/* ---- one row each -----------------------------------------------------------------
- */
+/* ---- one row each ---------------------------------------------------------------- */
 
 static kent_provenance provenance(const kent_record *record)
 {
@@ -177,8 +175,7 @@ static void add_rules(kent_reader *r, kent_record *record, kent_catalogue *c)
     source_with_status(record, rules->source, sizeof rules->source);
 }
 
-/* ---- a standard: one pipe per row and class ---------------------------------------
- */
+/* ---- a standard: one pipe per row and class -------------------------------------- */
 
 enum { CLASSES_MOST = 16 };
 
@@ -289,8 +286,7 @@ static void add_standard(kent_reader *r, kent_record *record, kent_catalogue *c)
     }
 }
 
-/* ---- files ------------------------------------------------------------------------
- */
+/* ---- files ----------------------------------------------------------------------- */
 
 static const struct {
     const char *list, *group;

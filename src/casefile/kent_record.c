@@ -24,8 +24,7 @@ static const struct {
     [KENT_SHELF_RULES] = {"rule", "set of rules"},
 };
 
-/* ---- complaints -------------------------------------------------------------------
- */
+/* ---- complaints ------------------------------------------------------------------ */
 
 static void complain_at(kent_reader *r, kent_record *record, const kent_twig *twig,
                         const char *what)
@@ -61,8 +60,7 @@ void kent_record_complain(kent_reader *r, kent_record *record, const char *key,
     complain_at(r, record, twig ? twig : record->twig, what);
 }
 
-/* ---- one value --------------------------------------------------------------------
- */
+/* ---- one value ------------------------------------------------------------------- */
 
 /* The value as the file has it, for messages. */
 static void show(const kent_twig *twig, char *out, size_t size)
@@ -446,8 +444,7 @@ static read_value *const READ[] = {
     [KENT_VALUE_EITHER] = either,
 };
 
-/* ---- one record -------------------------------------------------------------------
- */
+/* ---- one record ------------------------------------------------------------------ */
 
 static const char *member_text(const kent_twig *twig, const char *name)
 {

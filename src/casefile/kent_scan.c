@@ -95,8 +95,7 @@ static void emit(scanner *s, const char *bytes, size_t count)
     out->text[out->length] = '\0';
 }
 
-/* ---- files ------------------------------------------------------------------------
- */
+/* ---- files ----------------------------------------------------------------------- */
 
 static kent_status slurp(FILE *file, size_t most, char **bytes, size_t *size,
                          kent_error *err, const char *name)
@@ -229,8 +228,7 @@ static void pop(scanner *s)
     s->depth--;
 }
 
-/* ---- lexemes ----------------------------------------------------------------------
- */
+/* ---- lexemes --------------------------------------------------------------------- */
 
 static bool is_name_start(char c)
 {
@@ -527,8 +525,7 @@ static size_t lex_sign(scanner *s, const char *p)
     }
 }
 
-/* ---- @include ---------------------------------------------------------------------
- */
+/* ---- @include -------------------------------------------------------------------- */
 
 static void include(scanner *s, const char *name, int line)
 {
@@ -602,8 +599,7 @@ static void lex_include(scanner *s)
     include(s, name, line);
 }
 
-/* ---- all --------------------------------------------------------------------------
- */
+/* ---- all ------------------------------------------------------------------------- */
 
 static void step(scanner *s)
 {

@@ -26,8 +26,7 @@ typedef struct kent_place {
     int line;
 } kent_place;
 
-/* ---- given -------------------------------------------------------------------------
- */
+/* ---- given ----------------------------------------------------------------------- */
 
 typedef struct kent_point {
     char id[KENT_ID];
@@ -278,8 +277,7 @@ typedef struct kent_fitting_note {
     kent_place place;
 } kent_fitting_note;
 
-/* ---- derived -----------------------------------------------------------------------
- */
+/* ---- derived --------------------------------------------------------------------- */
 
 /* A stretch of one pipe between two nodes: what engine and steady state know. */
 typedef struct kent_span {

@@ -44,8 +44,7 @@ static const char *point_id(const kent_model *m, int point)
     return point >= 0 ? m->points[point].id : KENT_SHOWN_NONE;
 }
 
-/* ---- what was given ---------------------------------------------------------------
- */
+/* ---- what was given -------------------------------------------------------------- */
 
 static void print_head(const kent_view *v)
 {
@@ -178,8 +177,7 @@ static void print_pipes(const kent_view *v)
     finish(v, "Pipes", &t);
 }
 
-/* ---- what became of it ------------------------------------------------------------
- */
+/* ---- what became of it ----------------------------------------------------------- */
 
 static void print_spans(const kent_view *v)
 {

@@ -45,8 +45,7 @@ static void print_title(const kent_sheet *s)
     kent_text_clear(&words);
 }
 
-/* ---- geometry ---------------------------------------------------------------------
- */
+/* ---- geometry -------------------------------------------------------------------- */
 
 typedef struct kent_symbol {
     char text[24];
@@ -158,8 +157,7 @@ static void print_geometry(const kent_sheet *s)
     kent_derivation_clear(&d);
 }
 
-/* ---- load cases -------------------------------------------------------------------
- */
+/* ---- load cases ------------------------------------------------------------------ */
 
 static void case_row(const kent_sheet *s, size_t i, kent_table *t)
 {
@@ -304,8 +302,7 @@ static void print_case_arithmetic(const kent_sheet *s)
     kent_derivation_clear(&d);
 }
 
-/* ---- the calculation, and what stands beside it -----------------------------------
- */
+/* ---- the calculation, and what stands beside it ---------------------------------- */
 
 static void print_runner_up(const kent_sheet *s)
 {

@@ -11,8 +11,7 @@
 
 static const double DEGREES = 57.29577951308232; /* per radian */
 
-/* ---- writing ----------------------------------------------------------------------
- */
+/* ---- writing --------------------------------------------------------------------- */
 
 typedef struct kent_writer {
     const kent_results *results;
@@ -58,8 +57,7 @@ static void put_element(kent_writer *w, json_t *value)
     w->listed = true;
 }
 
-/* ---- values -----------------------------------------------------------------------
- */
+/* ---- values ---------------------------------------------------------------------- */
 
 static json_t *real(double value)
 {
@@ -139,8 +137,7 @@ static json_t *notes_of(const kent_notes *notes)
     return object_done(list);
 }
 
-/* ---- the head ---------------------------------------------------------------------
- */
+/* ---- the head -------------------------------------------------------------------- */
 
 static json_t *water_of(const kent_water *water)
 {
@@ -167,8 +164,7 @@ static void put_head(kent_writer *w)
     put_value(w, water_of(&w->model->water));
 }
 
-/* ---- steady -----------------------------------------------------------------------
- */
+/* ---- steady ---------------------------------------------------------------------- */
 
 static json_t *steady_point(const kent_model *m, size_t point, double head)
 {
@@ -223,8 +219,7 @@ static void put_steady(kent_writer *w)
     free(head);
 }
 
-/* ---- scenarios --------------------------------------------------------------------
- */
+/* ---- scenarios ------------------------------------------------------------------- */
 
 static json_t *scenario_point(const kent_model *m, size_t point,
                               const kent_scenario_result *s)
@@ -277,8 +272,7 @@ static void put_scenarios(kent_writer *w)
     put_text(w, "]");
 }
 
-/* ---- fittings ---------------------------------------------------------------------
- */
+/* ---- fittings -------------------------------------------------------------------- */
 
 static json_t *case_of(const kent_load_case *c)
 {
@@ -423,8 +417,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     return object_done(o);
 }
 
-/* ---- the tail ---------------------------------------------------------------------
- */
+/* ---- the tail -------------------------------------------------------------------- */
 
 /* One "what\tvalue\twhy" of the model. */
 static json_t *assumed_of(const char *note)

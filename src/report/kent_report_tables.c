@@ -23,8 +23,7 @@ typedef struct kent_page {
     kent_text *out;
 } kent_page;
 
-/* ---- the page ---------------------------------------------------------------------
- */
+/* ---- the page -------------------------------------------------------------------- */
 
 /* 0: a, 25: z, 26: aa ... */
 static void letter_of(size_t index, char out[4])
@@ -88,8 +87,7 @@ static void print_title(kent_page *page)
     kent_text_add(page->out, "\n");
 }
 
-/* ---- the table of fittings --------------------------------------------------------
- */
+/* ---- the table of fittings ------------------------------------------------------- */
 
 enum {
     STATION,
@@ -224,8 +222,7 @@ static void print_fittings(kent_page *page)
     }
 }
 
-/* ---- the notes under it -----------------------------------------------------------
- */
+/* ---- the notes under it ---------------------------------------------------------- */
 
 static void join_notes(const kent_notes *notes, kent_text *words)
 {
@@ -348,8 +345,7 @@ static void print_totals(kent_page *page)
     kent_text_clear(&words);
 }
 
-/* ---- the table of pressures -------------------------------------------------------
- */
+/* ---- the table of pressures ------------------------------------------------------ */
 
 static void pressure_row(const kent_page *page, size_t i, kent_table *t)
 {
@@ -391,8 +387,7 @@ static void print_pressures(kent_page *page)
     kent_table_clear(&t);
 }
 
-/* ---- what the scenarios did -------------------------------------------------------
- */
+/* ---- what the scenarios did ------------------------------------------------------ */
 
 static void add_extreme(const kent_page *page, const kent_extreme *e, kent_text *words)
 {
@@ -487,8 +482,7 @@ static void print_scenarios(kent_page *page)
     }
 }
 
-/* ---- --wide, and the end ----------------------------------------------------------
- */
+/* ---- --wide, and the end --------------------------------------------------------- */
 
 /* Every further column of summary.csv, as one more table. */
 static void print_rest(kent_page *page)

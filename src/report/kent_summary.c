@@ -36,8 +36,7 @@ static kent_row row_of(const kent_results *r, kent_system units, size_t fitting)
     return row;
 }
 
-/* ---- columns of numbers: SI -------------------------------------------------------
- */
+/* ---- columns of numbers: SI ------------------------------------------------------ */
 
 static double station(const kent_row *r) { return r->fitting->station; }
 static double angle(const kent_row *r) { return r->fitting->angle; }
@@ -155,8 +154,7 @@ static double lowest(const kent_row *r)
     return r->pressures.at[KENT_PRESSURE_LOWEST];
 }
 
-/* ---- columns of words -------------------------------------------------------------
- */
+/* ---- columns of words ------------------------------------------------------------ */
 
 static void point(const kent_row *r, kent_text *out)
 {
@@ -265,8 +263,7 @@ static void cautions(const kent_row *r, kent_text *out)
     }
 }
 
-/* ---- the list ---------------------------------------------------------------------
- */
+/* ---- the list -------------------------------------------------------------------- */
 
 enum {
     NARROW = 1, /* the narrow table shows it already */
@@ -343,8 +340,7 @@ static bool has_unit(const kent_summary_column *c, kent_system units)
            kent_units_display(c->kind, units).unit[0] != '\0';
 }
 
-/* ---- as CSV -----------------------------------------------------------------------
- */
+/* ---- as CSV ---------------------------------------------------------------------- */
 
 void kent_summary_field(kent_text *out, const char *text)
 {
@@ -405,8 +401,7 @@ kent_status kent_report_summary_csv(const kent_results *r, const kent_report_opt
     return status;
 }
 
-/* ---- as the last table of --wide --------------------------------------------------
- */
+/* ---- as the last table of --wide ------------------------------------------------- */
 
 static void add_cell(const kent_row *row, const kent_summary_column *c,
                      kent_text *words, kent_table *t)

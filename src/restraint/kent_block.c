@@ -62,8 +62,7 @@ double kent_gravity_volume(double upward, double factor, double unit_weight)
     return factor * upward / unit_weight;
 }
 
-/* ---- parts
- * ---------------------------------------------------------------------------- */
+/* ---- parts ----------------------------------------------------------------------- */
 
 static kent_fault face_size(const kent_rules *rules, const kent_site *site,
                             double sideways, kent_block *out)
@@ -200,8 +199,7 @@ static bool bearing_carries(const kent_rules *rules, const kent_site *site,
     return true;
 }
 
-/* ---- a block
- * -------------------------------------------------------------------------- */
+/* ---- a block --------------------------------------------------------------------- */
 
 kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
                            const kent_demand *demand, kent_block *out)

@@ -26,8 +26,7 @@ double kent_holding_part(const kent_load_case *c, kent_sense sense)
     return kent_vec3_length(t);
 }
 
-/* ---- what governs
- * ---------------------------------------------------------------------- */
+/* ---- what governs ---------------------------------------------------------------- */
 
 /* The case with the greatest factored load of a sense, leaving one out (-1: none left
  * out); -1 where no case has any. */
@@ -96,8 +95,7 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h)
     w->pull_factor = c->safety_factor;
 }
 
-/* ---- a block
- * --------------------------------------------------------------------------- */
+/* ---- a block --------------------------------------------------------------------- */
 
 static kent_fault holding_soil_fault(const kent_holding_work *w)
 {
@@ -161,8 +159,7 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
     }
 }
 
-/* ---- restrained length
- * ----------------------------------------------------------------- */
+/* ---- restrained length ----------------------------------------------------------- */
 
 static kent_leg leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
 {

@@ -61,8 +61,7 @@ bool kent_leg_bears(const kent_fitting *fitting, kent_vec3 thrust)
     return thrust.z <= lifted;
 }
 
-/* ---- one leg
- * --------------------------------------------------------------------------- */
+/* ---- one leg --------------------------------------------------------------------- */
 
 /* N per m of empty pipe; NAN: not known. source 11.1 */
 static double pipe_weight(const kent_pipe *p, double gravity)
@@ -159,8 +158,7 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
     return isfinite(out->length) ? 0 : KENT_LACK_GRIP;
 }
 
-/* ---- how far it may run
- * ---------------------------------------------------------------- */
+/* ---- how far it may run ---------------------------------------------------------- */
 
 static int standing_compare(const void *left, const void *right)
 {

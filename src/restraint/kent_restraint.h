@@ -9,8 +9,7 @@
 #include "kent_derivation.h"
 #include "kent_loads.h"
 
-/* ---- plain functions ----------------------------------------------------------------
- */
+/* ---- plain functions ------------------------------------------------------------- */
 
 /* Rankine's coefficients of passive and active earth pressure; friction_angle rad. */
 double kent_rankine_passive(double friction_angle);
@@ -65,8 +64,7 @@ double kent_restrained_length_bend(double force, double angle, double factor,
                                    double friction, double bearing);
 double kent_restrained_length_end(double force, double factor, double friction);
 
-/* ---- every fitting of a model
- * -------------------------------------------------------- */
+/* ---- every fitting of a model ---------------------------------------------------- */
 
 typedef enum kent_block_type {
     KENT_BLOCK_NONE,

@@ -39,8 +39,7 @@ struct kent_newton {
     kent_status failed; /* of the linear solver; KENT_OK: it did not fail */
 };
 
-/* ---- what KINSOL calls ------------------------------------------------------------
- */
+/* ---- what KINSOL calls ----------------------------------------------------------- */
 
 /* 1: beyond any number there, try nearer by. KINSOL's line search does not end on NaN.
  */
@@ -120,8 +119,7 @@ static void call_error(int code, const char *module, const char *function,
     (void)data;
 }
 
-/* ---- life -------------------------------------------------------------------------
- */
+/* ---- life ------------------------------------------------------------------------ */
 
 void kent_newton_free(kent_newton *nw)
 {
@@ -201,8 +199,7 @@ done:
     return status == KENT_OK ? KENT_OK : kent_error_nomem(err);
 }
 
-/* ---- solving ----------------------------------------------------------------------
- */
+/* ---- solving --------------------------------------------------------------------- */
 
 /* Unknowns: 1 m and 1 m/s in the largest span; equations the same. Link laws change
  * from solve to solve, and with them what their equations measure. */

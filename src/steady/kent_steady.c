@@ -51,8 +51,7 @@ static const char *node_name(const kent_model *m, int node)
     return m->points[m->nodes[node].point].id;
 }
 
-/* ---- what cannot be solved, whatever the flows -------------------------------------
- */
+/* ---- what cannot be solved, whatever the flows ----------------------------------- */
 
 /* Share of the full capacity at the steady opening. */
 static double valve_share(const kent_valve *v)
@@ -150,8 +149,7 @@ done:
     return status;
 }
 
-/* ---- solving -----------------------------------------------------------------------
- */
+/* ---- solving --------------------------------------------------------------------- */
 
 static const char *stop_text(kent_stop stop)
 {
@@ -228,8 +226,7 @@ done:
     return status;
 }
 
-/* ---- the result --------------------------------------------------------------------
- */
+/* ---- the result ------------------------------------------------------------------ */
 
 /* Capacity at full opening that passes the given flow between the heads found. (6.10)
  */

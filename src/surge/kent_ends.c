@@ -3,8 +3,7 @@
 #include <math.h>
 #include <stdlib.h>
 
-/* ---- laws --------------------------------------------------------------------------
- */
+/* ---- laws ------------------------------------------------------------------------ */
 
 double kent_level_head(const kent_level *level, double c, double y)
 {
@@ -38,8 +37,7 @@ double kent_gate_flow(double capacity, double c, double inverse_y)
     return copysign(2.0 * drop * capacity / (ze + sqrt(ze * ze + 4.0 * drop)), c);
 }
 
-/* ---- kinds -------------------------------------------------------------------------
- */
+/* ---- kinds ----------------------------------------------------------------------- */
 
 /* line[side][node]: the wave that arrives there; line[!side][node]: the one that leaves
  */
@@ -167,8 +165,7 @@ void kent_ends_solve(const kent_ends *e, kent_waves *w)
     }
 }
 
-/* ---- building ----------------------------------------------------------------------
- */
+/* ---- building -------------------------------------------------------------------- */
 
 static kent_end_kind kind_of(const kent_model *m, const kent_node *node)
 {

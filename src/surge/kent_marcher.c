@@ -32,8 +32,7 @@ struct kent_marcher {
     double *time, *head, *flow; /* of the trace */
 };
 
-/* ---- building ----------------------------------------------------------------------
- */
+/* ---- building -------------------------------------------------------------------- */
 
 static kent_status look(const kent_model *m, const kent_waves *w,
                         const kent_watch *watch, kent_eye *eye, kent_error *err)
@@ -146,8 +145,7 @@ void kent_marcher_free(kent_marcher *k)
     free(k);
 }
 
-/* ---- marching ----------------------------------------------------------------------
- */
+/* ---- marching -------------------------------------------------------------------- */
 
 static double now(const kent_marcher *k)
 {
@@ -242,8 +240,7 @@ size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
     return row;
 }
 
-/* ---- what became of it -------------------------------------------------------------
- */
+/* ---- what became of it ----------------------------------------------------------- */
 
 static double lowest_head(const kent_waves *w, size_t node)
 {

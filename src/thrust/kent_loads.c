@@ -15,8 +15,7 @@ double kent_thrust_azimuth(kent_vec3 thrust)
     return azimuth < 0.0 ? azimuth + 2.0 * PI : azimuth;
 }
 
-/* ---- one case -----------------------------------------------------------------------
- */
+/* ---- one case -------------------------------------------------------------------- */
 
 static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
                                  kent_case_kind kind, int scenario)
@@ -178,8 +177,7 @@ static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side
     case_fill(c, &i);
 }
 
-/* ---- all of them --------------------------------------------------------------------
- */
+/* ---- all of them ----------------------------------------------------------------- */
 
 static int loads_of_fitting(const kent_recorder *r, size_t index,
                             kent_fitting_loads *loads)

@@ -63,8 +63,7 @@ static void sheet_work(const sheet *s, words symbol, double value, kent_kind kin
 /* A direction cosine that is only rounding is printed as nil. */
 static double cosine(double n) { return fabs(n) < 1e-12 ? 0.0 : n; }
 
-/* ---- water and pressure at the centre -----------------------------------------------
- */
+/* ---- water and pressure at the centre -------------------------------------------- */
 
 static void sheet_water(const sheet *s)
 {
@@ -120,8 +119,7 @@ static void sheet_pressure(const sheet *s, const char *symbol, double pressure)
     }
 }
 
-/* ---- ports --------------------------------------------------------------------------
- */
+/* ---- ports ----------------------------------------------------------------------- */
 
 /* Whether the sizes of a port are those of a pipe class. */
 static bool port_catalogued(const sheet *s, const kent_port *port)
@@ -231,8 +229,7 @@ static void sheet_push(const sheet *s, size_t i)
                "8.1", "push, against the outward direction");
 }
 
-/* ---- sum ----------------------------------------------------------------------------
- */
+/* ---- sum ------------------------------------------------------------------------- */
 
 static double component(kent_vec3 v, char axis)
 {
@@ -315,8 +312,7 @@ static void sheet_sum(const sheet *s)
                          "sqrt(T_x^2+T_y^2+T_z^2)", "8.8", "resultant thrust");
 }
 
-/* ---- check line, by type ------------------------------------------------------------
- */
+/* ---- check line, by type --------------------------------------------------------- */
 
 static bool same(double a, double b)
 {

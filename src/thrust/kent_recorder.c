@@ -12,8 +12,7 @@ static const double PI = 3.14159265358979323846;
  * 8.6 says why that cannot change what prints. */
 static const double USUAL_SPEED = 1.0;
 
-/* ---- what to watch ------------------------------------------------------------------
- */
+/* ---- what to watch --------------------------------------------------------------- */
 
 /* Index of the watch at a place, added where it is new among those from `first` on. */
 static int recorder_watch(kent_recorder *r, size_t first, int span, double chainage,
@@ -170,8 +169,7 @@ const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count)
     return r->watches;
 }
 
-/* ---- one scenario -------------------------------------------------------------------
- */
+/* ---- one scenario ---------------------------------------------------------------- */
 
 /* Instants to go back for dQ/dt: the crossing in whole steps, at least one. */
 static size_t sensor_lag(const kent_sensor *sensor, double step)

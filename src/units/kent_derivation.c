@@ -85,8 +85,7 @@ const char *kent_coherent_unit(kent_kind kind, kent_system system)
     return coherent_unit(kind, system, &worth);
 }
 
-/* ---- filling ------------------------------------------------------------------------
- */
+/* ---- filling --------------------------------------------------------------------- */
 
 static void derivation_append(kent_derivation *d, const kent_line *line)
 {
@@ -160,8 +159,7 @@ void kent_derivation_clear(kent_derivation *d)
     *d = (kent_derivation){0};
 }
 
-/* ---- printing -----------------------------------------------------------------------
- */
+/* ---- printing -------------------------------------------------------------------- */
 
 /* Six significant digits: a reader of the digits then knows that they are rounded in
  * the sixth. Shorter numbers in a formula are exact, as is a plain "0". */

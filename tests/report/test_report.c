@@ -7,8 +7,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* ---- printed text ------------------------------------------------------------------
- */
+/* ---- printed text ---------------------------------------------------------------- */
 
 /* Fails, showing the line, where one is wider than a hundred columns. */
 static void assert_narrow(const char *text)
@@ -158,8 +157,7 @@ static void check_lists_all_that_was_understood(void **state)
     kent_mixed_clear(&mixed);
 }
 
-/* ---- JSON --------------------------------------------------------------------------
- */
+/* ---- JSON ------------------------------------------------------------------------ */
 
 /* Where a key must stand: "steady[].points[].id"; [] means every element, of which
  * there must be at least one. */
@@ -358,8 +356,7 @@ static void a_value_that_is_not_there_is_null(void **state)
     kent_mixed_clear(&mixed);
 }
 
-/* ---- CSV ---------------------------------------------------------------------------
- */
+/* ---- CSV ------------------------------------------------------------------------- */
 
 /* The next field of a record (RFC 4180) into out; returns what follows it: ',', '\n' or
  * '\0'. */
@@ -484,8 +481,7 @@ static void a_profile_runs_along_every_pipe_without_a_step_back(void **state)
     kent_mixed_clear(&mixed);
 }
 
-/* ---- sinks that refuse -------------------------------------------------------------
- */
+/* ---- sinks that refuse ----------------------------------------------------------- */
 
 static int refuse(void *to, const char *text, size_t length)
 {
@@ -517,8 +513,7 @@ static void a_sink_that_is_full_makes_every_report_fail(void **state)
     kent_mixed_clear(&mixed);
 }
 
-/* ---- catalogue ---------------------------------------------------------------------
- */
+/* ---- catalogue ------------------------------------------------------------------- */
 
 static void the_catalogue_lists_each_row_with_its_source(void **state)
 {

@@ -344,8 +344,7 @@ static void every_block_of_many_depths_keeps_the_rules(void **state)
     }
 }
 
-/* ---- published blocks, through fittings with given ports ---------------------------
- */
+/* ---- published blocks, through fittings with given ports ------------------------- */
 
 /* The ports of a bend that turns by `to` off the +x axis; one alone is a dead end. */
 static kent_restraints *sized_by_ports(kent_build *b, size_t ports, kent_vec3 to,

@@ -53,8 +53,7 @@ static void finish(kent_build *b, kent_restraints *r)
     kent_build_clear(b);
 }
 
-/* ---- what governs ------------------------------------------------------------------
- */
+/* ---- what governs ---------------------------------------------------------------- */
 
 static void the_greatest_factored_load_governs_not_the_greatest_thrust(void **state)
 {
@@ -299,8 +298,7 @@ static void concrete_beyond_a_thousand_kilonewtons_wants_designing(void **state)
     }
 }
 
-/* ---- nothing needed, nothing asked -------------------------------------------------
- */
+/* ---- nothing needed, nothing asked ----------------------------------------------- */
 
 static void a_turn_that_the_joint_takes_is_listed_and_not_held(void **state)
 {
@@ -353,8 +351,7 @@ static void no_restraint_on_purpose_is_said_but_not_counted(void **state)
     finish(&b, r);
 }
 
-/* ---- refusals ----------------------------------------------------------------------
- */
+/* ---- refusals -------------------------------------------------------------------- */
 
 static void
 without_soil_or_cover_there_is_no_block_and_it_says_what_to_give(void **state)
@@ -504,8 +501,7 @@ static void a_block_larger_than_the_rules_allow_is_refused(void **state)
     finish(&b, r);
 }
 
-/* ---- restrained joints -------------------------------------------------------------
- */
+/* ---- restrained joints ----------------------------------------------------------- */
 
 /* Worked out beside the program: friction angle 30 degrees x 0.75, iron 7050 kg/m3. */
 static void a_bend_s_length_is_rounded_up_to_whole_pipes(void **state)

@@ -64,8 +64,7 @@ static double flow_in(const kent_build *b, const kent_steady *s, const char *spa
     return s->span_flow[kent_build_span_of(b, span)];
 }
 
-/* ---- every equation again, on its own ----------------------------------------------
- */
+/* ---- every equation again, on its own -------------------------------------------- */
 
 /* m3/s */
 static void check_continuity(const kent_model *m, const kent_steady *s, double gap)
@@ -178,8 +177,7 @@ static void check_all(const kent_model *m, const kent_steady *s)
     assert_true(s->report.worst_head_gap <= 1e-13 * head);
 }
 
-/* ---- closed forms ------------------------------------------------------------------
- */
+/* ---- closed forms ---------------------------------------------------------------- */
 
 /* (1 + K + f L/D) V2/2g = difference of levels. */
 static void two_reservoirs_share_out_their_head_in_one_pipe(void **state)
@@ -349,8 +347,7 @@ static void three_pipes_equal_the_one_subramanya_finds(void **state)
     assert_close(equivalent_drop(2, 0.0, 0.0), equivalent_drop(0, 0.5, 377.4), 1e-3);
 }
 
-/* ---- loops and rest ----------------------------------------------------------------
- */
+/* ---- loops and rest -------------------------------------------------------------- */
 
 static void a_bridge_between_equal_heads_carries_nothing(void **state)
 {
@@ -494,8 +491,7 @@ static void frictionless_pipes_lose_their_velocity_head_only(void **state)
     kent_build_clear(&b);
 }
 
-/* ---- several levels ----------------------------------------------------------------
- */
+/* ---- several levels -------------------------------------------------------------- */
 
 /* The middle reservoir fills or empties as the junction's head stands to its level. */
 static void three_reservoirs_meet_at_one_head(void **state)
@@ -575,8 +571,7 @@ static void the_static_level_looks_through_closed_valves_only(void **state)
     kent_build_clear(&b);
 }
 
-/* ---- valves ------------------------------------------------------------------------
- */
+/* ---- valves ---------------------------------------------------------------------- */
 
 /* A line with a valve at its end; capacity NONE: by flow. */
 static kent_build valve_line(double capacity, double flow)
@@ -698,8 +693,7 @@ static void an_in_line_valve_given_by_flow_may_run_against_its_route(void **stat
     }
 }
 
-/* ---- outflows ----------------------------------------------------------------------
- */
+/* ---- outflows -------------------------------------------------------------------- */
 
 enum { DEPENDENT = 1, INDEPENDENT = 0 };
 
@@ -755,8 +749,7 @@ static void water_pumped_in_flows_back_to_the_level(void **state)
     assert_true(drawn(DEPENDENT, -0.05, 0.0) == -0.05);
 }
 
-/* ---- networks at random ------------------------------------------------------------
- */
+/* ---- networks at random ---------------------------------------------------------- */
 
 /* 0 .. 1, repeatable. */
 static double chance(unsigned *seed)
@@ -928,8 +921,7 @@ static void a_grid_of_three_thousand_junctions_is_solved(void **state)
     kent_build_clear(&b);
 }
 
-/* ---- failures ----------------------------------------------------------------------
- */
+/* ---- failures -------------------------------------------------------------------- */
 
 /* An inflow whose loss is beyond any number. */
 static void a_failure_says_why_and_where(void **state)

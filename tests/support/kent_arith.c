@@ -42,8 +42,7 @@ __attribute__((format(printf, 2, 3))) static void evaluator_fail(evaluator *e,
     va_end(args);
 }
 
-/* ---- intervals ----------------------------------------------------------------------
- */
+/* ---- intervals ------------------------------------------------------------------- */
 
 /* Outwards by a few roundings of double arithmetic. */
 static kent_interval interval(double lo, double hi)
@@ -156,8 +155,7 @@ static kent_interval interval_most(kent_interval a, kent_interval b)
     return (kent_interval){fmax(a.lo, b.lo), fmax(a.hi, b.hi)};
 }
 
-/* ---- functions ----------------------------------------------------------------------
- */
+/* ---- functions ------------------------------------------------------------------- */
 
 /* Either one argument, or any number taken pairwise. */
 static const struct function {
@@ -180,8 +178,7 @@ static int function_find(const char *name, size_t length)
     return -1;
 }
 
-/* ---- stacks -------------------------------------------------------------------------
- */
+/* ---- stacks ---------------------------------------------------------------------- */
 
 static void evaluator_push(evaluator *e, kent_interval value)
 {
@@ -288,8 +285,7 @@ static void evaluator_close(evaluator *e)
     evaluator_push(e, result);
 }
 
-/* ---- reading ------------------------------------------------------------------------
- */
+/* ---- reading --------------------------------------------------------------------- */
 
 /* A number with what its last digit leaves open; returns its end. */
 static const char *number_read(const char *s, kent_interval *out)

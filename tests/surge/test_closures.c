@@ -149,8 +149,7 @@ static void an_instant_closure_gives_joukowskys_rise(void **state)
     closure_clear(&c);
 }
 
-/* ---- reflections -------------------------------------------------------------------
- */
+/* ---- reflections ----------------------------------------------------------------- */
 
 /* A wave of 1 m comes along pipe 1 (fed by an outflow that starts to flow inwards) to
  * the junction J with up to two more pipes; 1 s through each. Bores m, speeds m/s. */

@@ -201,8 +201,7 @@ static void text_that_does_not_fit_is_cut_not_overrun(void **state)
     kent_derivation_clear(&d);
 }
 
-/* ---- the judge itself ---------------------------------------------------------------
- */
+/* ---- the judge itself ------------------------------------------------------------ */
 
 static void assert_between(const char *text, double lo, double hi)
 {
