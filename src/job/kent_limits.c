@@ -117,8 +117,8 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
         if (!run->grid->misses[i]) continue;
         kent_notes_add(
             &r->cautions,
-            "span %s is short for the common step: its wave speed %s is marched as "
-            "%s (inertia kept)",
+            "span %s does not fit the common step: its wave speed %s is marched as %s "
+            "(inertia kept)",
             m->spans[i].id,
             kent_said_whole(KENT_SPEED, m->units, m->spans[i].wave_speed).s,
             kent_said_whole(KENT_SPEED, m->units, run->grid->wave_speed_used[i]).s);

@@ -112,6 +112,18 @@ double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
 
 /* Square in plan and no taller than wide; wide enough for what pulls it down.
  * source docs/theory/10-blocks.md, 10.13 .. 10.15 */
+double kent_gravity_most(const kent_rules *rules, const kent_site *site)
+{
+    return kent_side_down(2.0 * kent_site_axis(site), rules->side_step);
+}
+
+double kent_gravity_shallow(const kent_rules *rules, const kent_site *site,
+                            double volume)
+{
+    const double most = kent_gravity_most(rules, site);
+    return most > 0.0 ? sqrt(volume / most) : 0.0; /* NaN: no depth is stated */
+}
+
 static void gravity_shape(const kent_rules *rules, const kent_site *site,
                           const kent_demand *demand, double unit_weight,
                           kent_block *out)
@@ -121,8 +133,9 @@ static void gravity_shape(const kent_rules *rules, const kent_site *site,
     const double footing = demand->load[KENT_DOWNWARD] > 0.0
                                ? demand->load[KENT_DOWNWARD] / site->vertical
                                : 0.0;
-    const double side =
-        kent_side_up(fmax(cbrt(volume), sqrt(footing)), rules->side_step);
+    const double side = kent_side_up(fmax(fmax(cbrt(volume), sqrt(footing)),
+                                          kent_gravity_shallow(rules, site, volume)),
+                                     rules->side_step);
 
     out->width = side;
     out->thickness = side;

@@ -160,6 +160,12 @@ static void derive_bearing_upright(const kent_holding_work *w, kent_holding *h)
     }
 }
 
+/* [no taller than the ground lets it be][carries a downward thrust too] */
+static const char *const GRAVITY_SIDE[2][2] = {
+    {UP("V0^(1/3)"), UP("max(V0^(1/3), sqrt(A0))")},
+    {UP("sqrt(V0/top)"), UP("max(sqrt(V0/top), sqrt(A0))")},
+};
+
 static void derive_gravity(const kent_holding_work *w, kent_holding *h)
 {
     kent_derivation *d = &h->derivation;
@@ -182,9 +188,16 @@ static void derive_gravity(const kent_holding_work *w, kent_holding *h)
         kent_derivation_work(d, "A0", down / w->site.vertical, KENT_AREA, "Fdn/qv",
                              "10.16", "area that carries the downward thrust");
     }
+    const double volume = kent_gravity_volume(up, 1.0, unit_weight);
+    const bool shallow = kent_gravity_shallow(r, &w->site, volume) > cbrt(volume);
+    if (shallow) {
+        kent_derivation_work(d, "top", kent_gravity_most(r, &w->site), KENT_LENGTH,
+                             "-ceil(-(2*axis)/step - " KENT_SIDE_SLACK_TEXT ")*step",
+                             "10.15", "height at which it would reach the ground");
+    }
     kent_derivation_work(d, "a", b->width, KENT_LENGTH,
-                         down > 0.0 ? UP("max(V0^(1/3), sqrt(A0))") : UP("V0^(1/3)"),
-                         "10.14", "side of a square plan");
+                         GRAVITY_SIDE[shallow][down > 0.0], "10.14",
+                         "side of a square plan");
     rule(d, "hmin", r->least_height, KENT_LENGTH, "least height");
     kent_derivation_work(d, "hg", b->height, KENT_LENGTH, UP("max(V0/(a*a), hmin)"),
                          "10.15", "height");

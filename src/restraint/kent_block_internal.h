@@ -40,6 +40,15 @@ double kent_site_axis(const kent_site *site); /* m below ground */
  */
 double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth);
 
+/* m: height of a gravity block that would reach the ground's surface; NAN: no cover
+ * stated. */
+double kent_gravity_most(const kent_rules *rules, const kent_site *site);
+
+/* m: side that a gravity block of a volume (m3) needs to be no taller than that; 0
+ * where no cover is stated. source 10.14 */
+double kent_gravity_shallow(const kent_rules *rules, const kent_site *site,
+                            double volume);
+
 /* What would let a face bear sideways (N) here: the least cover (m; NAN: none within
  * reach), and the least allowable bearing (Pa; NAN: no face fits at all). */
 double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,

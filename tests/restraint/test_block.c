@@ -145,6 +145,27 @@ static void a_crest_gets_a_weight_that_beats_the_lift(void **state)
     kent_build_clear(&b);
 }
 
+/* 0.62 m pipe under 0.7 m: its axis at 1.01 m, so at most 2.0 m of height, and a lift
+ * whose cube would be taller. */
+static void a_weight_under_shallow_cover_grows_wide_not_out_of_the_ground(void **state)
+{
+    (void)state;
+    const double rise = 200.0 * tan(22.5 * DEGREE);
+    kent_build b = main_that_turns(0.0, rise);
+    b.model->ground.cover = 0.7;
+    kent_restraints *r = sized(&b);
+    const kent_holding *h = holding_of(&b, r, "B");
+    const double up = 2.0 * 1.0e6 * 0.25 * PI * 0.62 * 0.62 * sin(22.5 * DEGREE);
+
+    assert_true(cbrt(1.5 * up / 23e3) > 2.0);
+    assert_true(h->held);
+    assert_true(h->block.height <= 2.0 * (0.7 + 0.31) + 1e-12);
+    assert_true(h->block.width > h->block.height);
+    assert_true(h->block.volume * 23e3 >= 1.5 * up);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
 static void a_crest_in_ground_water_takes_more_concrete(void **state)
 {
     (void)state;
@@ -487,6 +508,7 @@ int main(void)
         cmocka_unit_test(a_factor_inside_the_soil_value_multiplies_the_one_applied),
         cmocka_unit_test(weaker_soil_never_gets_a_smaller_face),
         cmocka_unit_test(a_crest_gets_a_weight_that_beats_the_lift),
+        cmocka_unit_test(a_weight_under_shallow_cover_grows_wide_not_out_of_the_ground),
         cmocka_unit_test(a_crest_in_ground_water_takes_more_concrete),
         cmocka_unit_test(water_counts_from_the_bottom_of_a_block_up),
         cmocka_unit_test(a_sag_gets_a_base_on_the_ground_below),

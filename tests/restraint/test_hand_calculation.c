@@ -99,6 +99,30 @@ static void so_it_does_in_ground_water_and_in_sleeves(void **state)
     check_all(&b, 300);
 }
 
+/* A steep crest under little cover: the block is as tall as the ground lets it be. */
+static void so_it_does_under_little_cover(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", 0.0, 0.0, 40.0);
+    (void)kent_build_point(&b, "B", 200.0, 0.0, 120.0);
+    (void)kent_build_point(&b, "C", 400.0, 0.0, 40.0);
+    (void)kent_build_pipe(&b, "P", "A B C", 0.6, 1000.0);
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_scenario(&b, "shut", 60.0);
+    (void)kent_build_soil(&b, "till", 180e3, 19e3, 0.7);
+    b.model->loads.test_pressure = 1.2e6;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, CASES, 3);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+
+    assert_non_null(kent_derivation_find(&h->derivation, "top"));
+    assert_true(check_lines("B", &h->derivation, KENT_SI) > 20);
+    assert_true(check_lines("B", &h->derivation, KENT_US) > 20);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
 static void so_it_does_in_inches(void **state)
 {
     (void)state;
@@ -230,6 +254,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(every_printed_line_follows_from_the_digits_above_it),
         cmocka_unit_test(so_it_does_in_ground_water_and_in_sleeves),
+        cmocka_unit_test(so_it_does_under_little_cover),
         cmocka_unit_test(so_it_does_in_inches),
         cmocka_unit_test(so_it_does_with_restrained_joints),
         cmocka_unit_test(so_it_does_where_a_fitting_is_pushed_up_and_pulled_down),
