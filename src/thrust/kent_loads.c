@@ -17,16 +17,21 @@ double kent_thrust_azimuth(kent_vec3 thrust)
 
 /* ---- one case -------------------------------------------------------------------- */
 
+static double kind_factor(const kent_model *m, kent_case_kind kind)
+{
+    const double factor = m->loads.factor[kind];
+    return isnan(factor) ? m->rules.safety_factor : factor;
+}
+
 static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
                                  kent_case_kind kind, int scenario)
 {
     kent_load_case *c = &loads->cases[loads->count++];
-    const double factor = m->loads.factor[kind];
 
     *c = (kent_load_case){
         .kind = kind,
         .scenario = scenario,
-        .safety_factor = isnan(factor) ? m->rules.safety_factor : factor,
+        .safety_factor = kind_factor(m, kind),
         .above_90_percent = NAN,
         .step = NAN,
     };
@@ -139,6 +144,21 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
     c->step = slot->step;
 }
 
+/* What presses on one side of a shut valve. */
+typedef struct kent_press {
+    kent_case_kind kind;
+    double pressure, time; /* Pa; s, NAN outside scenarios */
+    int scenario;          /* -1: none */
+} kent_press;
+
+/* Keeps the one that asks for more: with factors of their own the higher pressure need
+ * not be it. */
+static void press_take(const kent_model *m, kent_press *most, kent_press p)
+{
+    const double asks = kind_factor(m, p.kind) * p.pressure;
+    if (asks > kind_factor(m, most->kind) * most->pressure) *most = p;
+}
+
 /* A valve shut with the most that can press on one side and nothing behind (9.4). */
 static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side,
                              kent_fitting_loads *loads)
@@ -146,30 +166,26 @@ static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
     const int toward = m->ports[f->port_first + side].toward;
-    kent_case_kind kind = KENT_CASE_STATIC;
-    double pressure = fitting_static_pressure(m, f), time = NAN;
-    int scenario = -1;
+    const kent_press at_rest = {KENT_CASE_STATIC, fitting_static_pressure(m, f), NAN,
+                                -1};
+    kent_press most = at_rest;
 
     if (!isnan(m->loads.test_pressure)) {
-        const double test = fitting_test_pressure(m, f);
-        if (!(pressure > test)) {
-            pressure = test;
-            kind = KENT_CASE_TEST;
-        }
+        most = (kent_press){KENT_CASE_TEST, fitting_test_pressure(m, f), NAN, -1};
+        press_take(m, &most, at_rest);
     }
     for (size_t s = 0; s < m->scenario_count; s++) {
         if (!r->slots[s].started) continue;
         const kent_seen *seen = &r->slots[s].seen[fitting];
-        const double peak = kent_model_pressure(m, seen->highest_head[side], f->at.z);
-        if (!(peak > pressure)) continue;
-        pressure = peak;
-        kind = scenario_kind(&m->scenarios[s]);
-        scenario = (int)s;
-        time = seen->highest_at[side];
+        const kent_press peak = {
+            scenario_kind(&m->scenarios[s]),
+            kent_model_pressure(m, seen->highest_head[side], f->at.z),
+            seen->highest_at[side], (int)s};
+        press_take(m, &most, peak);
     }
-    kent_load_case *c = loads_add(m, loads, kind, scenario);
-    kent_instant i = kent_instant_at_rest(m, f, pressure, (int)side);
-    i.time = time;
+    kent_load_case *c = loads_add(m, loads, most.kind, most.scenario);
+    kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
+    i.time = most.time;
     c->closed = true;
     c->pressed = side;
     (void)snprintf(c->name, sizeof c->name, "closed from %s",
