@@ -110,8 +110,7 @@ double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
     return net > 0.0 ? sideways / net : NAN;
 }
 
-/* Square in plan and no taller than wide; wide enough for what pulls it down.
- * source docs/theory/10-blocks.md, 10.13 .. 10.15 */
+/* source docs/theory/10-blocks.md, 10.15 */
 double kent_gravity_most(const kent_rules *rules, const kent_site *site)
 {
     return kent_side_down(2.0 * kent_site_axis(site), rules->side_step);
@@ -124,6 +123,8 @@ double kent_gravity_shallow(const kent_rules *rules, const kent_site *site,
     return most > 0.0 ? sqrt(volume / most) : 0.0; /* NaN: no depth is stated */
 }
 
+/* Square in plan and no taller than wide; wide enough for what pulls it down.
+ * source docs/theory/10-blocks.md, 10.13 .. 10.15 */
 static void gravity_shape(const kent_rules *rules, const kent_site *site,
                           const kent_demand *demand, double unit_weight,
                           kent_block *out)
