@@ -30,21 +30,50 @@ static double highest_on_span(const kent_results *r, const kent_scenario_result 
     return highest;
 }
 
+/* Says so where a pressure (Pa), reached some way along a span (m), passes its rating.
+ */
+static void judge_pressure(kent_results *r, int span, double reached, double chainage,
+                           const char *when)
+{
+    const kent_model *m = r->model;
+    const double rating = m->pipes[m->spans[span].pipe].pressure_rating;
+    if (!(reached > rating)) return; /* NaN: no rating is known */
+    kent_notes_add(&r->cautions, "pipe %s: %s reached %s along it in %s, rated %s",
+                   m->spans[span].id, kent_said_of(KENT_PRESSURE, m->units, reached).s,
+                   kent_said_whole(KENT_LENGTH, m->units, chainage).s, when,
+                   kent_said_of(KENT_PRESSURE, m->units, rating).s);
+    r->limit_exceeded = true;
+}
+
 static void judge_rating(kent_results *r, const kent_scenario_result *run)
 {
     const kent_model *m = r->model;
     for (size_t i = 0; i < m->span_count; i++) {
-        const double rating = m->pipes[m->spans[i].pipe].pressure_rating;
         double chainage = 0.0;
-        if (!isfinite(rating)) continue;
         const double reached = highest_on_span(r, run, (int)i, &chainage);
-        if (reached <= rating) continue;
-        kent_notes_add(&r->cautions, "pipe %s: %s reached %s along it in %s, rated %s",
-                       m->spans[i].id, kent_said_of(KENT_PRESSURE, m->units, reached).s,
-                       kent_said_whole(KENT_LENGTH, m->units, chainage).s,
-                       m->scenarios[run->scenario].id,
-                       kent_said_of(KENT_PRESSURE, m->units, rating).s);
-        r->limit_exceeded = true;
+        judge_pressure(r, (int)i, reached, chainage, m->scenarios[run->scenario].id);
+    }
+}
+
+/* Without flow pressure is highest where a span lies lowest. */
+static void judge_rating_at_rest(kent_results *r)
+{
+    const kent_model *m = r->model;
+    for (size_t i = 0; i < m->span_count; i++) {
+        const kent_span *span = &m->spans[i];
+        const double level = isnan(m->loads.static_level)
+                                 ? kent_static_level(m, span->node[0])
+                                 : m->loads.static_level;
+        size_t lowest = span->route_first;
+        for (size_t p = 1; p < span->route_count; p++) {
+            const size_t at = span->route_first + p;
+            if (m->points[m->route[at]].at.z < m->points[m->route[lowest]].at.z) {
+                lowest = at;
+            }
+        }
+        const double z = m->points[m->route[lowest]].at.z;
+        judge_pressure(r, (int)i, kent_model_pressure(m, level, z),
+                       m->chainage[lowest] - m->chainage[span->route_first], "static");
     }
 }
 
@@ -127,6 +156,7 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
 
 void kent_limits_judge(kent_results *r)
 {
+    judge_rating_at_rest(r);
     for (size_t i = 0; i < r->scenario_count; i++) {
         judge_rating(r, &r->scenarios[i]);
         judge_vapour(r, &r->scenarios[i]);

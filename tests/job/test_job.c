@@ -156,6 +156,27 @@ static void a_rating_that_is_passed_is_said_and_sets_the_limit(void **state)
     kent_build_clear(&b);
 }
 
+/* 40 m of water over E, 3.9 bar, and no scenario at all. */
+static void a_rating_is_held_against_water_at_rest_too(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    kent_build_derive(&b);
+    const int none = 0;
+    b.model->pipes[0].pressure_rating = 3.8e5; /* Pa */
+    kent_results *r = run(&b, &(kent_job_options){&none, 0, 1});
+    assert_int_equal(r->scenario_count, 0);
+    assert_true(a_caution_holds(&r->cautions, "along it in static"));
+    assert_true(r->limit_exceeded);
+    kent_results_free(r);
+
+    b.model->pipes[0].pressure_rating = 4.0e5;
+    r = run(&b, &(kent_job_options){&none, 0, 1});
+    assert_false(a_caution_holds(&r->cautions, "along it in static"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 static void a_peak_at_the_very_end_asks_for_a_longer_run(void **state)
 {
     (void)state;
@@ -195,6 +216,7 @@ int main(void)
             a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky),
         cmocka_unit_test(a_fitting_below_the_vapour_limit_says_so),
         cmocka_unit_test(a_rating_that_is_passed_is_said_and_sets_the_limit),
+        cmocka_unit_test(a_rating_is_held_against_water_at_rest_too),
         cmocka_unit_test(a_peak_at_the_very_end_asks_for_a_longer_run),
         cmocka_unit_test(a_sheet_of_ports_runs_without_a_network),
     };
