@@ -144,17 +144,6 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
 
 /* ---- soils ----------------------------------------------------------------------- */
 
-static const kent_soil UNKNOWN_SOIL = {.factor_inside = 1.0,
-                                       .allowable_bearing = NAN,
-                                       .vertical_bearing = NAN,
-                                       .unit_weight = NAN,
-                                       .friction_angle = NAN,
-                                       .cohesion = NAN,
-                                       .friction_ratio = NAN,
-                                       .adhesion_ratio = NAN,
-                                       .passive_ratio = NAN,
-                                       .place = {-1, 0}};
-
 static void assume_bearing(kent_filling *f, const kent_soil *row)
 {
     char what[96];
@@ -166,7 +155,7 @@ void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
 {
     kent_soil *s = &f->model->soils[index];
     const int row = kent_record_field(record, "from")->index;
-    *s = UNKNOWN_SOIL;
+    *s = kent_soil_blank();
     (void)snprintf(s->source, sizeof s->source, "given in the case");
     if (row >= 0) {
         const kent_soil *from = &f->catalogue->soils[row];
@@ -224,6 +213,8 @@ static void fill_port(const kent_record *record, double face, kent_port *p)
                                                isnan(outside) ? inside : outside),
         .face = kent_record_number_or(record, "face", isnan(face) ? 0.0 : face),
         .momentum_factor = kent_record_number(record, "momentum_factor"),
+        .kind = KENT_PORT_GIVEN,
+        .level = NAN,
         .span = -1,
         .toward = -1,
         .pressure = kent_record_number(record, "pressure"),
@@ -281,13 +272,16 @@ static void fill_ports(kent_filling *f, kent_record *record, kent_fitting_note *
 void kent_fill_fitting(kent_filling *f, kent_record *record, size_t index)
 {
     kent_fitting_note *n = &f->model->notes[index];
+    *n = kent_note_blank();
     const kent_field *at = kent_record_field(record, "at");
     const kent_field *id = kent_record_field(record, "id");
     const bool has_ports = kent_record_has(record, "ports");
 
     kent_record_copy(record, id->twig ? "id" : "at", NULL, n->id, sizeof n->id);
     n->point = at->index;
-    n->type = kent_record_field(record, "type")->index;
+    const int type = kent_record_field(record, "type")->index;
+    n->type = type > KENT_STRAIGHT ? -1 : type;
+    if (type > KENT_STRAIGHT) n->role = (kent_role)(type - KENT_STRAIGHT);
     n->angle = kent_record_number(record, "angle");
     n->orientation = kent_record_field(record, "orientation")->index;
     n->restraint = kent_record_field(record, "restraint")->index;

@@ -8,6 +8,7 @@
 void kent_fill_point(kent_filling *f, kent_record *record, size_t index)
 {
     kent_point *p = &f->model->points[index];
+    *p = kent_point_blank();
     kent_record_copy(record, "id", NULL, p->id, sizeof p->id);
     p->at =
         (kent_vec3){kent_record_number(record, "x"), kent_record_number(record, "y"),
@@ -188,6 +189,7 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
 {
     const kent_catalogue *c = f->catalogue;
     kent_pipe *p = &f->model->pipes[index];
+    *p = kent_pipe_blank();
     const int class_index = kent_record_field(record, "pipe_class")->index;
     const kent_pipe_class *row = class_index >= 0 ? &c->pipes[class_index] : NULL;
     const int own = kent_record_field(record, "material")->index;

@@ -151,15 +151,7 @@ static void add_soil(kent_reader *r, kent_record *record, kent_catalogue *c)
 {
     kent_soil *s = grown(r, (void **)&c->soils, &c->soil_count, sizeof *s);
     if (!s) return;
-    *s = (kent_soil){.factor_inside = 1.0,
-                     .vertical_bearing = NAN,
-                     .unit_weight = NAN,
-                     .friction_angle = NAN,
-                     .cohesion = NAN,
-                     .friction_ratio = NAN,
-                     .adhesion_ratio = NAN,
-                     .passive_ratio = NAN,
-                     .place = {-1, 0}};
+    *s = kent_soil_blank();
     kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
     kent_record_soil(record, s);
     source_with_status(record, s->source, sizeof s->source);
@@ -169,7 +161,7 @@ static void add_rules(kent_reader *r, kent_record *record, kent_catalogue *c)
 {
     kent_rules *rules = grown(r, (void **)&c->rules, &c->rule_count, sizeof *rules);
     if (!rules) return;
-    *rules = (kent_rules){0};
+    *rules = (kent_rules){.factor_test = NAN};
     kent_record_copy(record, "id", NULL, rules->id, sizeof rules->id);
     kent_record_rules(record, rules);
     source_with_status(record, rules->source, sizeof rules->source);

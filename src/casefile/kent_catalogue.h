@@ -16,14 +16,28 @@ typedef struct kent_pipe_class {
     char material[KENT_ID];
     char standard[96];                                   /* "EN 545:2010" */
     double outside_diameter, wall, wall_minimum, lining; /* m; nominal, minimum */
-    double pressure_rating;                              /* Pa; NAN */
+    double pressure_rating;                              /* Pa, in service; NAN */
+    double surge_rating; /* Pa, service and surge together, occasional; NAN */
+    double test_rating;  /* Pa, under the site test; NAN */
     kent_provenance from;
 } kent_pipe_class;
+
+enum { KENT_CREEP_ROWS = 8, KENT_DERATING_ROWS = 12 };
+
+typedef struct kent_derating {
+    double temperature; /* K, up to which ... */
+    double factor;      /* ... ratings keep this share */
+} kent_derating;
 
 typedef struct kent_material {
     char id[KENT_ID];                            /* "ductile-iron" */
     double modulus, poisson, density, roughness; /* Pa, -, kg/m3, m */
     double lining_modulus;                       /* Pa, of its usual lining; 0 */
+    bool plastic;
+    kent_creep creep[KENT_CREEP_ROWS]; /* [creep_count] */
+    size_t creep_count;
+    kent_derating derating[KENT_DERATING_ROWS]; /* [derating_count] rising */
+    size_t derating_count;
     kent_provenance from;
 } kent_material;
 
@@ -52,6 +66,10 @@ typedef struct kent_catalogue {
 kent_status kent_catalogue_read(const char *folder, kent_catalogue **out,
                                 kent_complaints *complaints, kent_error *err);
 void kent_catalogue_free(kent_catalogue *c);
+
+/* The share of its ratings that a material keeps at a temperature (K), linear between
+ * rows, 1 below the first; NAN above the last: not for use. 1 without rows. */
+double kent_material_derating(const kent_material *material, double temperature);
 
 const kent_pipe_class *kent_catalogue_pipe(const kent_catalogue *c, const char *id);
 const kent_material *kent_catalogue_material(const kent_catalogue *c, const char *id);

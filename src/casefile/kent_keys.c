@@ -50,6 +50,7 @@
     PLAIN(KENT_VALUE_GROUP, g, k, of, fallback, says)
 #define STATION(g, k, fallback, says)                                                  \
     PLAIN(KENT_VALUE_STATION, g, k, NULL, fallback, says)
+#define TURN(g, k, fallback, says) PLAIN(KENT_VALUE_TURN, g, k, NULL, fallback, says)
 #define VECTOR(g, k, fallback, says)                                                   \
     PLAIN(KENT_VALUE_VECTOR, g, k, NULL, fallback, says)
 /* Named in the format, refused by this version. */
@@ -61,10 +62,20 @@
 #define SOIL_VALUES(g, bearing)                                                        \
     QUANTITY(g, "allowable_bearing", KENT_STRESS, WITHIN(0.0, 5e7), bearing,           \
              "allowable horizontal bearing; 0: none can be relied on"),                \
+        LIST(g, "bearing_by_depth", "", "none",                                        \
+             "pairs (depth of the face's centre, bearing), in place of "               \
+             "allowable_bearing"),                                                     \
+        QUANTITY(g, "bearing_gradient", KENT_UNIT_WEIGHT, BETWEEN(0.0, 1e6), "none",   \
+                 "bearing per depth, in place of allowable_bearing"),                  \
+        NUMBER(g, "passive_share", BETWEEN(0.0, 1.0), "none",                          \
+               "share of the passive earth pressure that a block may count on, in "    \
+               "place of allowable_bearing"),                                          \
         NUMBER(g, "factor_inside", WITHIN(1.0, 10.0), "1.0",                           \
-               "safety factor already inside allowable_bearing"),                      \
+               "safety factor already inside the bearing"),                            \
         QUANTITY(g, "vertical_bearing", KENT_STRESS, WITHIN(0.0, 5e7),                 \
                  "allowable_bearing", "allowable bearing under a base"),               \
+        NUMBER(g, "base_friction", WITHIN(0.0, 1.5), "none",                           \
+               "coefficient of friction, concrete on soil"),                           \
         QUANTITY(g, "unit_weight", KENT_UNIT_WEIGHT, WITHIN(5e3, 3e4), "none",         \
                  "weight of the soil in place"),                                       \
         QUANTITY(g, "friction_angle", KENT_ANGLE, WITHIN(0.0, 0.95993108859688127),    \
@@ -76,11 +87,15 @@
                "pipe-to-soil adhesion over cohesion (restrained length)"),             \
         NUMBER(g, "passive_ratio", WITHIN(0.0, 1.0), "none",                           \
                "share of the passive pressure mobilised (restrained length)"),         \
+        LIST(g, "passive_ratios", "", "none",                                          \
+             "pairs (trench, passive_ratio), where it depends on the trench"),         \
         SWITCH(g, "unreliable", "false", "peat, fill: no restraint may count on it")
 
 #define RULE_VALUES(g, left_out)                                                       \
     NUMBER(g, "safety_factor", WITHIN(1.0, 10.0), left_out,                            \
            "factor on the thrust where a case states none of its own"),                \
+        NUMBER(g, "factor_test", WITHIN(1.0, 10.0), "safety_factor",                   \
+               "factor in place of safety_factor under the site test"),                \
         NUMBER(g, "height_to_depth", BETWEEN(0.0, 1.0), left_out,                      \
                "most height of a block over the depth of its base"),                   \
         NUMBER(g, "width_to_height_least", WITHIN(0.1, 10.0), left_out,                \
@@ -110,6 +125,7 @@
              "how far the values can be trusted")
 
 #define JOINTS   "push-on|mechanical|flanged|welded|fused|restrained"
+#define TRENCHES "type-1|type-2|type-3|type-4|type-5"
 #define SUPPORTS "flexible-joints|fixed-upstream|fixed-throughout"
 
 const kent_key KENT_KEYS[] = {
@@ -142,10 +158,16 @@ const kent_key KENT_KEYS[] = {
     LATER("case", "relief_valves", "relief valves"),
     LATER("case", "air_valves", "air valves"),
     LATER("case", "control_valves", "pressure reducing and sustaining valves"),
-    LATER("case", "states", "several steady states"),
-    LATER("case", "ground_zones", "ground by chainage"),
-    LATER("case", "points_file", "points from a table"),
-    LATER("case", "pipes_file", "pipes from a table"),
+    LIST("case", "states", "state", "one, \"normal\"", "steady flows to start from"),
+    LIST("case", "ground_zones", "ground_zone", "none",
+         "ground by stretches of a pipe"),
+    TEXT("case", "points_file", 255, "none", "points from a table (CSV)"),
+    TEXT("case", "pipes_file", 255, "none", "pipes from a table (CSV)"),
+    GROUP("case", "tables", "tables", "none", "how tables are written"),
+
+    WORD("tables", "decimal", "point|comma", "point", "decimal sign of numbers"),
+    WORD("tables", "separator", "comma|semicolon|tab", "comma",
+         "what stands between cells"),
 
     TEXT("project", "number", 63, "none", "project number"),
     TEXT("project", "drawing", 63, "none", "drawing number"),
@@ -163,12 +185,15 @@ const kent_key KENT_KEYS[] = {
              "from temperature", "dynamic viscosity"),
     QUANTITY("water", "vapour_pressure", KENT_PRESSURE, WITHIN(0.0, 1.1e5),
              "from temperature", "vapour pressure, absolute"),
-    LATER("water", "gas_content", "free gas by volume at one atmosphere"),
+    NUMBER("water", "gas_content", WITHIN(0.0, 0.05), "0.0",
+           "free gas by volume at one atmosphere"),
 
     QUANTITY("site", "altitude", KENT_LENGTH, WITHIN(-500.0, 11000.0), "0 m",
              "gives the barometric pressure"),
     QUANTITY("site", "gravity", KENT_ACCELERATION, WITHIN(9.0, 10.0), "9.80665 m/s^2",
              "acceleration of gravity"),
+    WORD("site", "station_style", "km+m|100m+m|100ft+ft", "km+m, in US units 100ft+ft",
+         "what \"1+198\" means"),
 
     ID("point", "id", "required", "its name"),
     QUANTITY("point", "x", KENT_LENGTH, WITHIN(-1e8, 1e8), "none", "east"),
@@ -177,9 +202,17 @@ const kent_key KENT_KEYS[] = {
              "level of the pipe's centre line"),
     QUANTITY("point", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "the ground's",
              "ground to crown of the pipe"),
+    QUANTITY("point", "ground_level", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "none",
+             "level of the ground, in place of cover"),
     QUANTITY_OR("point", "water_table", KENT_LENGTH, WITHIN(0.0, 1000.0), "none",
                 "the ground's", "depth of ground water below ground"),
     STATION("point", "station", "along the route", "its station"),
+    STATION("point", "station_ahead", "none",
+            "station equation: the station that counting goes on from"),
+    TURN("point", "turn", "from coordinates",
+         "turn in plan, as \"45 deg right\", where there are no x and y"),
+    QUANTITY("point", "curve_radius", KENT_LENGTH, BETWEEN(0.0, 1e5), "none",
+             "radius of the arc that the pipe follows past this point"),
     REF("point", "soil", "soil", "the ground's", "soil around it"),
     SWITCH("point", "record", "false", "keep its history"),
 
@@ -226,9 +259,16 @@ const kent_key KENT_KEYS[] = {
            "minor losses spread along it, K on its bore"),
     QUANTITY("pipe", "pressure_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
              "pressure the pipe is rated for"),
-    LATER("pipe", "surge_rating", "pressure rating under surge"),
-    LATER("pipe", "test_rating", "pressure rating under test"),
-    LATER("pipe", "creep", "creep of a plastic wall"),
+    QUANTITY("pipe", "surge_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
+             "pressure it is rated for with surge"),
+    QUANTITY("pipe", "test_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
+             "pressure it is rated for under test"),
+    TEXT("pipe", "standard", 95, "the class's",
+         "standard and edition that its ratings are by"),
+    TURN("pipe", "branch_turn", "from coordinates",
+         "turn from the pipe that runs at its first point, where there are no x and y"),
+    LIST("pipe", "creep", "", "the material's",
+         "pairs (retardation time, compliance) of a plastic wall"),
 
     REF("fixed_level", "at", "point", "required", "point where it stands"),
     QUANTITY("fixed_level", "level", KENT_LENGTH, WITHIN(-1000.0, 9000.0), "required",
@@ -269,7 +309,7 @@ const kent_key KENT_KEYS[] = {
     WORD("scenario", "class", "recurring|occasional|exceptional", "occasional",
          "how often it may happen, for its factor"),
     LIST("scenario", "events", "event", "none", "what moves, and when"),
-    LATER("scenario", "states", "steady states it starts from"),
+    LIST("scenario", "states", "", "all", "ids of the states it starts from"),
     LATER("scenario", "without", "devices left out"),
 
     REF("event", "valve", "valve", "none", "valve that moves"),
@@ -304,10 +344,13 @@ const kent_key KENT_KEYS[] = {
     QUANTITY_OR("ground", "water_table", KENT_LENGTH, WITHIN(0.0, 1000.0), "none",
                 "none", "depth of ground water below ground"),
     SWITCH("ground", "wrapped", "false", "pipes are in polyethylene sleeves"),
+    WORD("ground", "trench", TRENCHES, "none", "kind of trench (AWWA C150)"),
 
     REF("fitting", "at", "point", "none", "point of a fitting found from geometry"),
     ID("fitting", "id", "none", "name of a fitting stated by its ports"),
-    WORD("fitting", "type", "bend|tee|wye|cross|reducer|dead-end|valve|straight",
+    WORD("fitting", "type",
+         "bend|tee|wye|cross|reducer|dead-end|valve|straight|tapping-tee|hydrant|"
+         "air-valve-tee|washout-tee",
          "from geometry", "kind of fitting"),
     QUANTITY("fitting", "angle", KENT_ANGLE, WITHIN(0.0, 3.1415926535897931),
              "from geometry", "turn of a bend, angle of a branch"),
@@ -323,7 +366,12 @@ const kent_key KENT_KEYS[] = {
     QUANTITY("fitting", "face", KENT_LENGTH, WITHIN(0.0, 100.0), "0 m",
              "centre to the face of every port"),
     LIST("fitting", "ports", "port", "none", "ports of a fitting without a network"),
-    LATER("fitting", "branch", "a branch without a pipe"),
+    GROUP("fitting", "branch", "branch", "none", "a branch without a pipe"),
+    LIST("fitting", "together_with", "", "none",
+         "ids of points whose fittings are held as one with this"),
+    SWITCH("fitting", "apart", "false", "never made part of a group unasked"),
+    LIST("fitting", "obstacles", "obstacle", "none",
+         "what lies near, that the soil behind a block may not count on"),
 
     VECTOR("port", "direction", "required", "out of the fitting: east, north, up"),
     QUANTITY("port", "pressure", KENT_PRESSURE, WITHIN(-1.2e5, 1e9), "required",
@@ -349,9 +397,17 @@ const kent_key KENT_KEYS[] = {
     NUMBER("loads", "safety_factor", WITHIN(1.0, 10.0), "the design rules'",
            "factor on every thrust"),
     GROUP("loads", "factors", "factors", "none", "factors by load case"),
-    LATER("loads", "test_rule", "rule that gives the test pressure"),
-    LATER("loads", "future_pressure", "pressure expected later"),
-    LATER("loads", "future_gauge_at", "where future_pressure is read"),
+    WORD("loads", "test_rule",
+         "EN805-surge-calculated|EN805-surge-assumed|C600|working-factor", "none",
+         "rule that gives the test pressure, in place of test_pressure"),
+    NUMBER("loads", "test_factor", WITHIN(1.0, 5.0), "1.5",
+           "factor on the working pressure, of test_rule \"working-factor\""),
+    QUANTITY("loads", "surge_allowance", KENT_PRESSURE, WITHIN(2e5, 1e8), "2 bar",
+             "surge taken in, of test_rule \"EN805-surge-assumed\""),
+    QUANTITY("loads", "future_pressure", KENT_PRESSURE, WITHIN(0.0, 1e9), "none",
+             "pressure expected later at future_gauge_at"),
+    REF("loads", "future_gauge_at", "point", "none",
+        "point where future_pressure is read"),
 
     NUMBER("factors", "test", WITHIN(1.0, 10.0), "safety_factor", "site test"),
     NUMBER("factors", "static", WITHIN(1.0, 10.0), "safety_factor", "still water"),
@@ -457,24 +513,40 @@ const kent_key KENT_KEYS[] = {
     LATER("control_valve", "opening_time", "time it takes to open"),
     LATER("control_valve", "closure_time", "time it takes to close"),
 
-    LATER("state", "id", "its name"),
-    LATER("state", "levels", "pairs (point, level)"),
-    LATER("state", "outflow_factor", "on every outflow"),
-    LATER("state", "roughness_factor", "on every roughness"),
+    ID("state", "id", "required", "its name"),
+    LIST("state", "levels", "", "none", "pairs (point of a fixed level, level)"),
+    NUMBER("state", "outflow_factor", WITHIN(0.0, 100.0), "1.0", "on every outflow"),
+    NUMBER("state", "roughness_factor", BETWEEN(0.0, 100.0), "1.0",
+           "on roughness, manning_n and friction_factor; hazen_williams_c is divided"),
     LATER("state", "running", "pairs (pump, how many run)"),
 
-    LATER("ground_zone", "pipe", "pipe it lies along"),
-    LATER("ground_zone", "from", "chainage where it starts"),
-    LATER("ground_zone", "to", "chainage where it ends"),
-    LATER("ground_zone", "soil", "soil"),
-    LATER("ground_zone", "cover", "cover"),
-    LATER("ground_zone", "water_table", "depth of ground water"),
-    LATER("ground_zone", "trench", "kind of trench"),
+    REF("ground_zone", "pipe", "pipe", "required", "pipe it lies along"),
+    STATION("ground_zone", "from", "required", "station where it starts"),
+    STATION("ground_zone", "to", "required", "station where it ends"),
+    REF("ground_zone", "soil", "soil", "the ground's", "soil"),
+    QUANTITY("ground_zone", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "the ground's",
+             "ground to crown of the pipe"),
+    QUANTITY_OR("ground_zone", "water_table", KENT_LENGTH, WITHIN(0.0, 1000.0), "none",
+                "the ground's", "depth of ground water below ground"),
+    WORD("ground_zone", "trench", TRENCHES, "the ground's",
+         "kind of trench (AWWA C150)"),
 
-    LATER("branch", "direction", "out of the fitting"),
-    LATER("branch", "outside_diameter", "outside diameter"),
-    LATER("branch", "joint", "kind of joint"),
-    LATER("branch", "end", "blank, valve or open"),
+    VECTOR("branch", "direction", "to the left, without x and y",
+           "out of the fitting: east, north, up"),
+    QUANTITY("branch", "outside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "required", "outside diameter"),
+    QUANTITY("branch", "inside_diameter", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "the outside", "bore, of an open one"),
+    WORD("branch", "joint", JOINTS, "flanged", "kind of joint"),
+    WORD("branch", "end", "blank|valve|open", "required", "how it ends"),
+
+    TEXT("obstacle", "what", 63, "required", "what it is"),
+    VECTOR("obstacle", "direction", "required",
+           "from the fitting's centre: east, north, up"),
+    QUANTITY("obstacle", "distance", KENT_LENGTH, BETWEEN(0.0, 1000.0), "required",
+             "level distance from the fitting's centre to its near side"),
+    QUANTITY("obstacle", "depth", KENT_LENGTH, BETWEEN(0.0, 100.0), "required",
+             "ground to its underside"),
 
     /* ---- files of the catalogue ----------------------------------------------- */
     COUNT("catalogue", "format", WITHIN(1.0, 1.0), "required",
@@ -554,6 +626,11 @@ static const struct {
     {"port", "a port"},
     {"loads", "loads"},
     {"factors", "factors"},
+    {"tables", "tables"},
+    {"state", "a state"},
+    {"ground_zone", "a ground zone"},
+    {"branch", "a branch"},
+    {"obstacle", "an obstacle"},
     {"solver", "solver"},
     {"design_rules", "design_rules"},
     {"catalogue", "a catalogue file"},

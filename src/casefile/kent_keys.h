@@ -19,6 +19,7 @@ typedef enum kent_value {
     KENT_VALUE_LIST, /* a list of groups (named in `words`) or of values */
     KENT_VALUE_GROUP,
     KENT_VALUE_STATION, /* "1+198": a length along the main */
+    KENT_VALUE_TURN,    /* "45 deg right": an angle in plan, + to the left */
     KENT_VALUE_VECTOR,  /* three numbers */
     KENT_VALUE_EITHER   /* a bare number (least, most), or a quantity of `kind` */
 } kent_value;

@@ -17,6 +17,7 @@ static const struct {
     [KENT_SHELF_PIPES] = {"pipe", "pipe"},
     [KENT_SHELF_SCENARIOS] = {"scenario", "scenario"},
     [KENT_SHELF_FITTINGS] = {"fitting", "fitting"},
+    [KENT_SHELF_STATES] = {"state", "state"},
     [KENT_SHELF_PIPE_CLASSES] = {"pipe_class", "pipe class"},
     [KENT_SHELF_MATERIALS] = {"material", "material"},
     [KENT_SHELF_VALVE_TYPES] = {"valve_type", "valve type"},
@@ -412,6 +413,46 @@ static void station(kent_reader *r, kent_record *record, const kent_key *key,
                                      : 1000.0 * (double)whole + part;
 }
 
+/* "45 deg right": rad, positive to the left. */
+static void turn(kent_reader *r, kent_record *record, const kent_key *key,
+                 kent_field *f)
+{
+    static const struct {
+        const char *word;
+        double sign;
+    } WAYS[] = {{" left", 1.0}, {" right", -1.0}};
+    const char *s = kent_twig_text(f->twig);
+    char angle[80];
+    for (size_t i = 0; s && i < sizeof WAYS / sizeof WAYS[0]; i++) {
+        const size_t n = strlen(s);
+        const size_t tail = strlen(WAYS[i].word);
+        if (n <= tail || n >= sizeof angle || strcmp(s + n - tail, WAYS[i].word) != 0) {
+            continue;
+        }
+        kent_error err = {0};
+        double size = NAN;
+        (void)snprintf(angle, sizeof angle, "%.*s", (int)(n - tail), s);
+        const kent_status status =
+            kent_units_read(r->units, angle, KENT_ANGLE, &size, &err);
+        if (status == KENT_E_NOMEM) r->failed = true;
+        if (status == KENT_OK && size >= 0.0 && size < 3.14159265358979323846) {
+            f->number = WAYS[i].sign * size;
+            return;
+        }
+        break;
+    }
+    if (s) {
+        complain(
+            r, record, f->twig,
+            "%s = \"%.40s\" is no turn; write an angle below 180 deg and which way, "
+            "for instance \"45 deg right\"",
+            key->key, s);
+    } else {
+        complain_type(r, record, f->twig, key->key,
+                      "a turn, for instance \"45 deg right\",");
+    }
+}
+
 static void compound(kent_reader *r, kent_record *record, const kent_key *key,
                      kent_field *f)
 {
@@ -441,7 +482,7 @@ static read_value *const READ[] = {
     [KENT_VALUE_REF] = reference,     [KENT_VALUE_WORD] = word,
     [KENT_VALUE_LIST] = compound,     [KENT_VALUE_GROUP] = compound,
     [KENT_VALUE_STATION] = station,   [KENT_VALUE_VECTOR] = vector,
-    [KENT_VALUE_EITHER] = either,
+    [KENT_VALUE_TURN] = turn,         [KENT_VALUE_EITHER] = either,
 };
 
 /* ---- one record ------------------------------------------------------------------ */

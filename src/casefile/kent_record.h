@@ -8,7 +8,7 @@
 #include "kent_keys.h"
 #include "kent_tree.h"
 
-enum { KENT_RECORD_FIELDS = 40 };
+enum { KENT_RECORD_FIELDS = 48 };
 
 /* Groups that references point to. */
 typedef enum kent_shelf {
@@ -19,6 +19,7 @@ typedef enum kent_shelf {
     KENT_SHELF_PIPES,    /* these three only so that ids are unique */
     KENT_SHELF_SCENARIOS,
     KENT_SHELF_FITTINGS,
+    KENT_SHELF_STATES,
     KENT_SHELF_PIPE_CLASSES,
     KENT_SHELF_MATERIALS,
     KENT_SHELF_VALVE_TYPES,

@@ -33,12 +33,15 @@ static bool type_fits(kent_fitting_type type, size_t count)
     case KENT_BEND:
     case KENT_REDUCER:
     case KENT_STRAIGHT:
+    case KENT_CURVE:
         return count == 2;
     case KENT_TEE:
     case KENT_WYE:
         return count == 3;
     case KENT_CROSS:
         return count >= 4;
+    case KENT_GROUP:
+        return count >= 1;
     case KENT_DEAD_END:
         return count == 1;
     case KENT_VALVE:
@@ -72,6 +75,7 @@ static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm
         .seal_diameter =
             gasketed && isfinite(outside) ? outside : pipe->inside_diameter,
         .outside_diameter = outside,
+        .level = (double)NAN,
         .momentum_factor = (double)NAN,
         .span = number,
         .chainage = m->chainage[arm.stop] - m->chainage[span->route_first],
@@ -334,6 +338,10 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                           .at = m->points[point].at,
                           .station = l->station[point],
                           .valve = type == KENT_VALVE ? site.device.index : -1,
+                          .curve_radius = (double)NAN,
+                          .curve_length = (double)NAN,
+                          .zone = -1,
+                          .trench = m->ground.trench,
                           .port_count = site.count,
                           .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
@@ -363,6 +371,7 @@ static bool copy_given(const kent_model *m, const kent_fitting_note *note,
     for (size_t i = 0; i < note->port_count; i++) {
         kent_port *port = &ports[i];
         *port = m->given_ports[note->port_first + i];
+        port->kind = KENT_PORT_GIVEN;
         port->span = port->toward = -1;
         port->sign = 1.0;
         if (!(kent_vec3_length(port->direction) > 0.0)) {
@@ -425,6 +434,10 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
                           .at = {nan, nan, nan},
                           .station = nan,
                           .valve = -1,
+                          .curve_radius = nan,
+                          .curve_length = nan,
+                          .zone = -1,
+                          .trench = m->ground.trench,
                           .port_count = note->port_count,
                           .place = note->place};
     (void)snprintf(out->id, sizeof out->id, "%s", note->id);

@@ -10,6 +10,8 @@
 static const double STANDARD_GRAVITY = 9.80665;   /* m/s2 */
 static const double USUAL_TEMPERATURE = 288.15;   /* K: 15 degC where none is given */
 static const double USUAL_SPEED_TOLERANCE = 0.02; /* - */
+static const double USUAL_TEST_FACTOR = 1.5;      /* of "working-factor" */
+static const double USUAL_SURGE_ALLOWANCE = 2e5;  /* Pa: the least of EN 805, 11.3.2 */
 
 kent_model *kent_model_new(void)
 {
@@ -19,10 +21,15 @@ kent_model *kent_model_new(void)
     m->water = kent_water_at(USUAL_TEMPERATURE);
     m->barometric = kent_barometric_pressure(0.0);
     m->gravity = STANDARD_GRAVITY;
-    m->ground = (kent_ground){
-        .soil = -1, .cover = (double)NAN, .water_table = (double)INFINITY};
+    m->ground = (kent_ground){.soil = -1,
+                              .cover = (double)NAN,
+                              .water_table = (double)INFINITY,
+                              .trench = -1};
     m->loads.test_pressure = (double)NAN;
-    m->loads.test_gauge = -1;
+    m->loads.test_gauge = m->loads.future_gauge = -1;
+    m->loads.test_factor = USUAL_TEST_FACTOR;
+    m->loads.surge_allowance = USUAL_SURGE_ALLOWANCE;
+    m->loads.future_pressure = (double)NAN;
     m->loads.static_level = (double)NAN;
     m->loads.place = (kent_place){-1, 0};
     for (size_t i = 0; i < sizeof m->loads.factor / sizeof m->loads.factor[0]; i++) {
@@ -46,13 +53,18 @@ static void clear_derived(kent_model *m)
     free(m->ends);
     free(m->ports);
     free(m->fittings);
+    free(m->members);
+    free(m->marches);
     m->chainage = NULL;
     m->spans = NULL;
     m->nodes = NULL;
     m->ends = NULL;
     m->ports = NULL;
     m->fittings = NULL;
+    m->members = NULL;
+    m->marches = NULL;
     m->span_count = m->node_count = m->port_count = m->fitting_count = 0;
+    m->member_count = m->march_count = 0;
 }
 
 void kent_model_free(kent_model *m)
@@ -75,6 +87,13 @@ void kent_model_free(kent_model *m)
     free(m->soils);
     free(m->notes);
     free(m->given_ports);
+    free(m->creep);
+    free(m->states);
+    free(m->state_levels);
+    free(m->scenario_states);
+    free(m->ground_zones);
+    free(m->obstacles);
+    free(m->together);
     kent_notes_clear(&m->assumed);
     kent_notes_clear(&m->cautions);
     free(m);
@@ -125,6 +144,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     status = kent_network_check_connected(m, complaints);
     if (status != KENT_OK) goto done;
     status = kent_fitting_list(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
+    status = kent_state_marches(m);
     if (status == KENT_OK && m->cautions.failed) status = KENT_E_NOMEM;
 done:
     if (status == KENT_OK && complaints->count > before) status = KENT_E_INPUT;

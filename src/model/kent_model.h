@@ -30,12 +30,16 @@ typedef struct kent_place {
 
 typedef struct kent_point {
     char id[KENT_ID];
-    kent_vec3 at;       /* m; x, y NAN where not given; z the pipe's centre line */
-    double cover;       /* m, ground to crown; NAN: the ground's */
-    double water_table; /* m below ground; NAN: the ground's; INFINITY: none */
-    double station;     /* m; NAN: worked out along the route */
-    int soil;           /* -1: the ground's */
-    bool record;        /* its history is wanted */
+    kent_vec3 at;         /* m; x, y NAN where not given; z the pipe's centre line */
+    double cover;         /* m, ground to crown; NAN: the ground's */
+    double ground_level;  /* m, in place of cover; NAN */
+    double water_table;   /* m below ground; NAN: the ground's; INFINITY: none */
+    double station;       /* m; NAN: worked out along the route */
+    double station_ahead; /* m, station equation: counted on from here; NAN: none */
+    double turn;          /* rad in plan, + to the left, where x, y are NAN; NAN */
+    double curve_radius;  /* m, of the arc that the pipe follows here; NAN: none */
+    int soil;             /* -1: the ground's */
+    bool record;          /* its history is wanted */
     kent_place place;
 } kent_point;
 
@@ -72,9 +76,21 @@ typedef struct kent_pipe {
     kent_joint joint;
     double joint_deflection; /* rad, that a joint may take; 0 where not known */
     double laying_length;    /* m, of one pipe: key pipe_length; NAN */
-    double pressure_rating;  /* Pa; NAN */
+    double branch_turn;      /* rad in plan, + to the left: its start against the pipe
+                                that runs there, where x, y are NAN; NAN */
+    double pressure_rating;  /* Pa, in service, as rated; NAN */
+    double surge_rating;     /* Pa, service and surge together; NAN */
+    double test_rating;      /* Pa, under the site test; NAN */
+    double derating;         /* of a plastic by temperature, on every rating; 1: none */
+    size_t creep_first, creep_count; /* into kent_model.creep; 0: elastic */
     kent_place place;
 } kent_pipe;
+
+/* One Kelvin-Voigt element of a plastic wall. */
+typedef struct kent_creep {
+    double time;       /* s, of retardation */
+    double compliance; /* 1/Pa */
+} kent_creep;
 
 typedef struct kent_fixed_level {
     int point;
@@ -137,22 +153,61 @@ typedef struct kent_scenario {
     double duration; /* s */
     kent_class class_of;
     size_t event_first, event_count; /* into kent_model.events */
+    size_t state_first, state_count; /* into kent_model.scenario_states; 0: all */
     kent_place place;
 } kent_scenario;
 
+typedef struct kent_state_level {
+    int fixed_level; /* index of the one that stands otherwise */
+    double level;    /* m above datum */
+} kent_state_level;
+
+/* A steady flow that scenarios may start from. A case without states has one,
+ * "normal". */
+typedef struct kent_state {
+    char id[KENT_ID];
+    size_t level_first, level_count; /* into kent_model.state_levels */
+    double outflow_factor;           /* on every outflow */
+    double roughness_factor; /* on roughness, n and f; Hazen-Williams' C is divided */
+    kent_place place;
+} kent_state;
+
+/* How the horizontal bearing of a soil is known. */
+typedef enum kent_bearing_route {
+    KENT_BEARING_CONSTANT, /* one presumptive value */
+    KENT_BEARING_BY_DEPTH, /* a table by depth */
+    KENT_BEARING_GRADIENT, /* so much per metre of depth */
+    KENT_BEARING_PASSIVE   /* a share of the passive earth pressure */
+} kent_bearing_route;
+
+enum { KENT_DEPTH_ROWS = 8, KENT_TRENCHES = 5 };
+
+typedef struct kent_depth_row {
+    double depth;   /* m, ground to the centre of the face */
+    double bearing; /* Pa */
+} kent_depth_row;
+
 typedef struct kent_soil {
     char id[KENT_ID];
-    char source[200];         /* "given in the case", or the catalogue row's source */
-    double allowable_bearing; /* Pa, horizontal; 0: none can be relied on */
-    double factor_inside;     /* >= 1: a factor already inside allowable_bearing */
-    double vertical_bearing;  /* Pa, under a base; NAN: allowable_bearing */
-    double unit_weight;       /* N/m3; NAN */
-    double friction_angle;    /* rad; NAN */
-    double cohesion;          /* Pa; NAN */
-    double friction_ratio;    /* pipe-soil friction angle over friction angle; NAN */
-    double adhesion_ratio;    /* pipe-soil adhesion over cohesion; NAN */
-    double passive_ratio;     /* share of the passive pressure mobilised, Kn; NAN */
-    bool unreliable;          /* peat, fill: no restraint may count on it */
+    char source[200]; /* "given in the case", or the catalogue row's source */
+    kent_bearing_route route;
+    double allowable_bearing; /* Pa, horizontal; 0: none can be relied on; NAN where
+                                 another route gives it */
+    kent_depth_row by_depth[KENT_DEPTH_ROWS]; /* [by_depth_count] depth rising */
+    size_t by_depth_count;
+    double bearing_gradient; /* Pa/m of depth; NAN */
+    double passive_share; /* of the passive pressure that a block may count on; NAN */
+    double factor_inside; /* >= 1: a factor already inside the bearing */
+    double vertical_bearing; /* Pa, under a base; NAN: allowable_bearing */
+    double base_friction;    /* concrete on soil, coefficient; NAN */
+    double passive_by_trench[KENT_TRENCHES]; /* passive_ratio by kind of trench; NAN */
+    double unit_weight;                      /* N/m3; NAN */
+    double friction_angle;                   /* rad; NAN */
+    double cohesion;                         /* Pa; NAN */
+    double friction_ratio; /* pipe-soil friction angle over friction angle; NAN */
+    double adhesion_ratio; /* pipe-soil adhesion over cohesion; NAN */
+    double passive_ratio;  /* share of the passive pressure mobilised, Kn; NAN */
+    bool unreliable;       /* peat, fill: no restraint may count on it */
     kent_place place;
 } kent_soil;
 
@@ -161,13 +216,47 @@ typedef struct kent_ground { /* the defaults of every point */
     double cover;            /* m; NAN: none stated */
     double water_table;      /* m below ground; INFINITY: none */
     bool wrapped;            /* pipes are in polyethylene sleeves */
+    int trench;              /* 0 .. KENT_TRENCHES - 1: "type-1" ...; -1: not stated */
 } kent_ground;
 
+/* Ground along part of a pipe; what a zone leaves out, ground says. */
+typedef struct kent_ground_zone {
+    int pipe;
+    double from, to;    /* m, stations along the pipe; from < to */
+    int soil;           /* -1 */
+    double cover;       /* m; NAN */
+    double water_table; /* m below ground; NAN; INFINITY: none */
+    int trench;         /* -1 */
+    kent_place place;
+} kent_ground_zone;
+
+/* Something near a fitting that soil must not be leant on through. */
+typedef struct kent_obstacle {
+    char what[64];
+    kent_vec3 direction; /* unit, from the fitting's centre */
+    double distance;     /* m, level, from the fitting's centre to its near side */
+    double depth;        /* m, ground to its underside */
+} kent_obstacle;
+
+/* How the test pressure is found. */
+typedef enum kent_test_rule {
+    KENT_TEST_FIXED,            /* test_pressure itself */
+    KENT_TEST_EN805_CALCULATED, /* with the surge computed */
+    KENT_TEST_EN805_ASSUMED,    /* with an assumed allowance for surge */
+    KENT_TEST_C600,             /* multiples of the working pressure, two places */
+    KENT_TEST_FACTOR            /* test_factor on the working pressure */
+} kent_test_rule;
+
 typedef struct kent_loads {
-    double test_pressure; /* Pa; NAN: no test case */
-    int test_gauge;       /* point where it is read; -1 */
-    double static_level;  /* m; NAN: the highest connected level */
-    double factor[8];     /* by kent_case_kind; NAN: the rules' safety factor */
+    kent_test_rule test_rule;
+    double test_pressure;   /* Pa, of KENT_TEST_FIXED; NAN: no test case */
+    int test_gauge;         /* point where it is read; -1 */
+    double test_factor;     /* of KENT_TEST_FACTOR */
+    double surge_allowance; /* Pa, of KENT_TEST_EN805_ASSUMED */
+    double static_level;    /* m; NAN: the highest connected level of any state */
+    double future_pressure; /* Pa; NAN: none */
+    int future_gauge;       /* point where it is read; -1 */
+    double factor[8];       /* by kent_case_kind; NAN: the rules' safety factor */
     kent_place place;
 } kent_loads;
 
@@ -190,6 +279,7 @@ typedef struct kent_rules {
     char id[KENT_ID];
     char source[200];
     double safety_factor;
+    double factor_test;          /* in place of safety_factor under test; NAN */
     double height_to_depth;      /* block height over depth of its base, at most */
     double width_to_height[2];   /* least, most */
     double least_thickness;      /* m */
@@ -226,8 +316,34 @@ typedef enum kent_fitting_type {
     KENT_REDUCER,
     KENT_DEAD_END,
     KENT_VALVE,
-    KENT_STRAIGHT /* nothing turns, changes or ends: listed for its ports only */
+    KENT_STRAIGHT, /* nothing turns, changes or ends: listed for its ports only */
+    KENT_CURVE,    /* the pipe itself bends, or its joints one after another */
+    KENT_GROUP     /* several fittings treated as one */
 } kent_fitting_type;
+
+/* What a fitting serves; its forces are those of its type. */
+typedef enum kent_role {
+    KENT_ROLE_NONE,
+    KENT_ROLE_TAPPING, /* a sleeve on a main that was there before */
+    KENT_ROLE_HYDRANT,
+    KENT_ROLE_AIR_VALVE,
+    KENT_ROLE_WASHOUT
+} kent_role;
+
+/* How a branch without a pipe ends. */
+typedef enum kent_branch_end {
+    KENT_BRANCH_NONE, /* there is no such branch */
+    KENT_BRANCH_BLANK,
+    KENT_BRANCH_VALVE,
+    KENT_BRANCH_OPEN /* discharges to the air what is drawn at the point */
+} kent_branch_end;
+
+typedef struct kent_branch {
+    kent_branch_end end;
+    kent_vec3 direction; /* unit, out of the fitting; NAN: to the left */
+    double outside_diameter, inside_diameter; /* m; inside NAN: the outside */
+    kent_joint joint;
+} kent_branch;
 
 typedef enum kent_orientation {
     KENT_HORIZONTAL,
@@ -243,6 +359,14 @@ typedef enum kent_restraint_choice {
     KENT_NO_RESTRAINT
 } kent_restraint_choice;
 
+/* Where pressure and flow of a leg come from. */
+typedef enum kent_port_kind {
+    KENT_PORT_SPAN,  /* a pipe */
+    KENT_PORT_GIVEN, /* the case states them */
+    KENT_PORT_STUB,  /* a dead branch: the fitting's pressure, no flow */
+    KENT_PORT_OUTLET /* open to the air: no gauge pressure, what is drawn here */
+} kent_port_kind;
+
 /* One leg of a fitting, seen from its centre. */
 typedef struct kent_port {
     kent_vec3 direction;    /* unit, out of the fitting */
@@ -250,13 +374,15 @@ typedef struct kent_port {
     double seal_diameter;   /* m, the pressure boundary at the first joint that slips */
     double outside_diameter; /* m, of the pipe; NAN */
     double face;             /* m, centre to port; 0: not given */
+    double level;            /* m, of its own where the fitting is a group; NAN */
     double momentum_factor;  /* NAN: worked out */
     /* in a network: where pressure and flow come from */
-    int span;        /* -1: ports-only */
     double chainage; /* m from the span's start */
     double sign;     /* +1 where flow along the span leaves the fitting here, else -1 */
-    bool at_end;     /* it is an end of the span, not a place along it */
+    int span;        /* -1: no pipe */
     int toward;      /* the next point along the pipe from here; -1 */
+    kent_port_kind kind;
+    bool at_end; /* it is an end of the span, not a place along it */
     /* ports-only */
     double pressure, flow; /* Pa gauge; m3/s out of the fitting */
 } kent_port;
@@ -266,13 +392,19 @@ typedef struct kent_fitting_note {
     char id[KENT_ID]; /* of a ports-only fitting, else its point's */
     int point;        /* -1: ports-only */
     int type;         /* kent_fitting_type; -1: from geometry */
-    double angle;     /* rad; NAN: from geometry */
-    int orientation;  /* kent_orientation; -1 */
-    int restraint;    /* kent_restraint_choice; -1: the default of its type */
-    int soil;         /* -1 */
-    double cover;     /* m; NAN */
-    double weight;    /* N; NAN */
-    double face;      /* m, of every port from geometry; NAN */
+    kent_role role;
+    kent_branch branch;
+    size_t together_first, together_count; /* into kent_model.together: points whose
+                                              fittings are held as one with this */
+    bool apart;                            /* never made part of a group unasked */
+    size_t obstacle_first, obstacle_count; /* into kent_model.obstacles */
+    double angle;                          /* rad; NAN: from geometry */
+    int orientation;                       /* kent_orientation; -1 */
+    int restraint; /* kent_restraint_choice; -1: the default of its type */
+    int soil;      /* -1 */
+    double cover;  /* m; NAN */
+    double weight; /* N; NAN */
+    double face;   /* m, of every port from geometry; NAN */
     size_t port_first, port_count; /* into kent_model.given_ports; 0: from geometry */
     kent_place place;
 } kent_fitting_note;
@@ -325,6 +457,14 @@ typedef struct kent_fitting {
     kent_vec3 at;           /* m; x, y NAN without coordinates */
     double station;         /* m along its route; NAN: ports-only */
     bool within_deflection; /* a turn that the joint takes: listed, not restrained */
+    kent_role role;
+    kent_branch branch;  /* one without a pipe: "branch extended"; end NONE: none */
+    double curve_radius; /* m, of a curve; NAN */
+    double curve_length; /* m along a curve; NAN */
+    size_t member_first, member_count;     /* of a group, into kent_model.members */
+    size_t obstacle_first, obstacle_count; /* into kent_model.obstacles */
+    int zone;   /* of kent_model.ground_zones, that it lies in; -1 */
+    int trench; /* -1: not stated */
     kent_restraint_choice restraint;
     int soil;                  /* -1: not stated */
     double cover, water_table; /* m; NAN: not stated */
@@ -336,6 +476,11 @@ typedef struct kent_fitting {
                        by route; tee, wye: [0], [1] the run, [2] the branch */
     kent_place place;
 } kent_fitting;
+
+/* A march: a scenario from one steady state. */
+typedef struct kent_march {
+    int scenario, state;
+} kent_march;
 
 /* Who draws and checks, printed on sheets and never computed with. Empty: not given. */
 typedef struct kent_project {
@@ -352,8 +497,9 @@ typedef struct kent_model {
         checksum; /* FNV-1a of the case file's bytes, includes in order */
 
     kent_water water;
-    double barometric; /* Pa absolute */
-    double gravity;    /* m/s2 */
+    double barometric;  /* Pa absolute */
+    double gravity;     /* m/s2 */
+    double gas_content; /* free gas by volume at one atmosphere, -; 0: none */
 
     kent_point *points;
     size_t point_count;
@@ -383,6 +529,20 @@ typedef struct kent_model {
     kent_loads loads;
     kent_rules rules;
     kent_solver solver;
+    kent_creep *creep;
+    size_t creep_count;
+    kent_state *states; /* at least one once derived */
+    size_t state_count;
+    kent_state_level *state_levels;
+    size_t state_level_count;
+    int *scenario_states; /* [scenario_state_count] */
+    size_t scenario_state_count;
+    kent_ground_zone *ground_zones;
+    size_t ground_zone_count;
+    kent_obstacle *obstacles;
+    size_t obstacle_count;
+    int *together; /* [together_count] points */
+    size_t together_count;
     kent_notes assumed; /* "what\tvalue\twhy": what nobody gave */
     kent_notes cautions;
 
@@ -398,7 +558,18 @@ typedef struct kent_model {
     size_t port_count;
     kent_fitting *fittings; /* by route and station, ports-only last */
     size_t fitting_count;
+    int *members; /* [member_count] points of grouped fittings */
+    size_t member_count;
+    kent_march *marches; /* [march_count] by scenario, then state: what is marched */
+    size_t march_count;
 } kent_model;
+
+/* With nothing given: NAN, -1, no branch, no derating, every bearing by one value. */
+kent_point kent_point_blank(void);
+kent_pipe kent_pipe_blank(void);
+kent_soil kent_soil_blank(void);
+kent_fitting_note kent_note_blank(void);
+kent_port kent_port_blank(void);
 
 kent_model *kent_model_new(void); /* empty, with every default set; NULL: no memory */
 void kent_model_free(kent_model *m);
@@ -408,6 +579,13 @@ void kent_model_free(kent_model *m);
  * a part cut off from every fixed level (its points are named). Returns KENT_OK,
  * KENT_E_INPUT (complaints were added) or KENT_E_NOMEM. */
 kent_status kent_model_derive(kent_model *m, kent_complaints *complaints);
+
+/* The main in one of its states: shares everything with m, which must outlive it, but
+ * the levels, outflows and friction that the state changes. capacity [valve_count]:
+ * what valves with a stated flow were found to pass in the first state; NULL: not known
+ * yet. Free it with kent_model_view_free alone. NULL: no memory. */
+kent_model *kent_model_in_state(const kent_model *m, int state, const double *capacity);
+void kent_model_view_free(kent_model *view);
 
 /* Whether indices are in range, spans and nodes fit each other, and every SI value that
  * must be positive is. For assertions and tests. */
@@ -435,6 +613,9 @@ int kent_model_valve_index(const kent_model *m, const char *id);
 
 /* Words as in the case file and in results: "bend", "dead-end", "push-on" ... */
 const char *kent_fitting_type_word(kent_fitting_type type);
+const char *kent_role_word(kent_role role); /* "tapping-tee" ...; "": none */
+const char *kent_branch_end_word(kent_branch_end end);
+const char *kent_trench_word(int trench); /* "type-1" ...; "" for -1 */
 const char *kent_orientation_word(kent_orientation orientation);
 const char *kent_joint_word(kent_joint joint);
 const char *kent_class_word(kent_class class_of);

@@ -9,7 +9,22 @@
     X(KENT_REDUCER, "reducer")                                                         \
     X(KENT_DEAD_END, "dead-end")                                                       \
     X(KENT_VALVE, "valve")                                                             \
-    X(KENT_STRAIGHT, "straight")
+    X(KENT_STRAIGHT, "straight")                                                       \
+    X(KENT_CURVE, "curve")                                                             \
+    X(KENT_GROUP, "group")
+
+#define ROLES(X)                                                                       \
+    X(KENT_ROLE_NONE, "")                                                              \
+    X(KENT_ROLE_TAPPING, "tapping-tee")                                                \
+    X(KENT_ROLE_HYDRANT, "hydrant")                                                    \
+    X(KENT_ROLE_AIR_VALVE, "air-valve-tee")                                            \
+    X(KENT_ROLE_WASHOUT, "washout-tee")
+
+#define BRANCH_ENDS(X)                                                                 \
+    X(KENT_BRANCH_NONE, "none")                                                        \
+    X(KENT_BRANCH_BLANK, "blank")                                                      \
+    X(KENT_BRANCH_VALVE, "valve")                                                      \
+    X(KENT_BRANCH_OPEN, "open")
 
 #define ORIENTATIONS(X)                                                                \
     X(KENT_HORIZONTAL, "horizontal")                                                   \
@@ -61,12 +76,21 @@
     }
 
 WORD_FUNCTION(kent_fitting_type_word, kent_fitting_type, type, FITTING_TYPES)
+WORD_FUNCTION(kent_role_word, kent_role, role, ROLES)
+WORD_FUNCTION(kent_branch_end_word, kent_branch_end, end, BRANCH_ENDS)
 WORD_FUNCTION(kent_orientation_word, kent_orientation, orientation, ORIENTATIONS)
 WORD_FUNCTION(kent_joint_word, kent_joint, joint, JOINTS)
 WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
 WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
 WORD_FUNCTION(kent_friction_word, kent_friction_law, law, FRICTION_LAWS)
 WORD_FUNCTION(kent_axial_support_word, kent_axial_support, support, AXIAL_SUPPORTS)
+
+const char *kent_trench_word(int trench)
+{
+    static const char *const WORDS[KENT_TRENCHES] = {"type-1", "type-2", "type-3",
+                                                     "type-4", "type-5"};
+    return trench >= 0 && trench < KENT_TRENCHES ? WORDS[trench] : "";
+}
 
 bool kent_joint_slips(kent_joint joint)
 {

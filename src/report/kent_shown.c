@@ -98,6 +98,7 @@ static const char *schematic_push(const kent_fitting *fitting)
 {
     switch (fitting->type) {
     case KENT_BEND:
+    case KENT_CURVE:
         return "outward";
     case KENT_TEE:
     case KENT_WYE:
@@ -107,6 +108,7 @@ static const char *schematic_push(const kent_fitting *fitting)
     case KENT_DEAD_END:
     case KENT_VALVE:
     case KENT_STRAIGHT:
+    case KENT_GROUP:
         break;
     }
     return "along pipe";
@@ -230,6 +232,8 @@ kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
         return shown("dead end");
     case KENT_VALVE:
     case KENT_STRAIGHT:
+    case KENT_CURVE:
+    case KENT_GROUP:
         break;
     }
     return shown("%s", word);

@@ -439,6 +439,8 @@ static void sheet_check(const sheet *s)
         break;
     case KENT_CROSS:
     case KENT_STRAIGHT:
+    case KENT_CURVE:
+    case KENT_GROUP:
         break;
     }
 }

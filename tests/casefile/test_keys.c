@@ -81,6 +81,13 @@ static void spellings_of_both_sides_of_the_ocean_are_one(void **state)
         assert_int_equal(*p, '\0');                                                    \
     } while (0)
 
+/* Types first, then what a tee or an end serves. */
+static const char *note_type_word(int i)
+{
+    return i <= KENT_STRAIGHT ? kent_fitting_type_word((kent_fitting_type)i)
+                              : kent_role_word((kent_role)(i - KENT_STRAIGHT));
+}
+
 static void words_stand_in_the_order_of_the_models_enumerations(void **state)
 {
     (void)state;
@@ -88,7 +95,9 @@ static void words_stand_in_the_order_of_the_models_enumerations(void **state)
     WORDS_AGREE("pipe", "axial_support", 3, kent_axial_support_word,
                 kent_axial_support);
     WORDS_AGREE("scenario", "class", 3, kent_class_word, kent_class);
-    WORDS_AGREE("fitting", "type", 8, kent_fitting_type_word, kent_fitting_type);
+    WORDS_AGREE("fitting", "type", 12, note_type_word, int);
+    WORDS_AGREE("branch", "joint", 6, kent_joint_word, kent_joint);
+    WORDS_AGREE("ground", "trench", KENT_TRENCHES, kent_trench_word, int);
     WORDS_AGREE("fitting", "orientation", 3, kent_orientation_word, kent_orientation);
     WORDS_AGREE("fitting", "restraint", 4, kent_restraint_word, kent_restraint_choice);
 }

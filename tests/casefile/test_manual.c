@@ -62,6 +62,9 @@ static void takes(const kent_key *k, char *out, size_t size)
     case KENT_VALUE_STATION:
         (void)snprintf(out, size, "a station, `\"1+198\"`, or a length");
         return;
+    case KENT_VALUE_TURN:
+        (void)snprintf(out, size, "a turn, `\"45 deg right\"`");
+        return;
     case KENT_VALUE_VECTOR:
         (void)snprintf(out, size, "three numbers, `[ 1.0, 0.0, 0.0 ]`");
         return;

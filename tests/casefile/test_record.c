@@ -179,6 +179,7 @@ static const char *wrong_type_for(const kent_key *k)
     case KENT_VALUE_REF:
     case KENT_VALUE_WORD:
     case KENT_VALUE_STATION:
+    case KENT_VALUE_TURN:
         return "{ }";
     case KENT_VALUE_SWITCH:
         return "\"true\"";

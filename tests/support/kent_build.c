@@ -67,6 +67,7 @@ kent_build kent_build_new(void)
     m->barometric = 101325.0;
     m->gravity = 9.80665;
     m->rules = (kent_rules){.id = "built",
+                            .factor_test = (double)NAN,
                             .source = "common practice, no source",
                             .safety_factor = 1.5,
                             .height_to_depth = 0.5,
@@ -93,12 +94,9 @@ int kent_build_point(kent_build *b, const char *id, double x, double y, double z
     kent_model *m = b->model;
     m->points = one_more(b, POINTS, m->points, &m->point_count, sizeof *m->points);
     const int i = (int)m->point_count - 1;
-    m->points[i] = (kent_point){.at = {x, y, z},
-                                .cover = (double)NAN,
-                                .water_table = (double)NAN,
-                                .station = (double)NAN,
-                                .soil = -1,
-                                .place = {0, i + 1}};
+    m->points[i] = kent_point_blank();
+    m->points[i].at = (kent_vec3){x, y, z};
+    m->points[i].place = (kent_place){0, i + 1};
     name(m->points[i].id, id);
     return i;
 }
@@ -131,24 +129,21 @@ int kent_build_pipe(kent_build *b, const char *id, const char *route, double bor
     const size_t count = add_route(b, route);
     m->pipes = one_more(b, PIPES, m->pipes, &m->pipe_count, sizeof *m->pipes);
     const int i = (int)m->pipe_count - 1;
-    m->pipes[i] = (kent_pipe){.route_first = first,
-                              .route_count = count,
-                              .length = (double)NAN,
-                              .inside_diameter = bore,
-                              .outside_diameter = bore + 2.0 * wall,
-                              .wall = wall,
-                              .wall_minimum = (double)NAN,
-                              .modulus = 170.0e9,
-                              .poisson = 0.28,
-                              .unit_mass = (double)NAN,
-                              .material_density = 7050.0,
-                              .friction = KENT_FRICTIONLESS,
-                              .wave_speed = wave_speed,
-                              .axial_support = KENT_FLEXIBLE_JOINTS,
-                              .joint = KENT_PUSH_ON,
-                              .laying_length = (double)NAN,
-                              .pressure_rating = (double)NAN,
-                              .place = {0, 100 + i}};
+    kent_pipe *p = &m->pipes[i];
+    *p = kent_pipe_blank();
+    p->route_first = first;
+    p->route_count = count;
+    p->inside_diameter = bore;
+    p->outside_diameter = bore + 2.0 * wall;
+    p->wall = wall;
+    p->modulus = 170.0e9;
+    p->poisson = 0.28;
+    p->material_density = 7050.0;
+    p->friction = KENT_FRICTIONLESS;
+    p->wave_speed = wave_speed;
+    p->axial_support = KENT_FLEXIBLE_JOINTS;
+    p->joint = KENT_PUSH_ON;
+    p->place = (kent_place){0, 100 + i};
     name(m->pipes[i].id, id);
     return i;
 }
@@ -258,20 +253,13 @@ int kent_build_soil(kent_build *b, const char *id, double allowable_bearing,
                     double unit_weight, double cover)
 {
     kent_model *m = b->model;
-    const double nan = (double)NAN;
     m->soils = one_more(b, SOILS, m->soils, &m->soil_count, sizeof *m->soils);
     const int i = (int)m->soil_count - 1;
-    m->soils[i] = (kent_soil){.source = "given in the case",
-                              .allowable_bearing = allowable_bearing,
-                              .factor_inside = 1.0,
-                              .vertical_bearing = nan,
-                              .unit_weight = unit_weight,
-                              .friction_angle = nan,
-                              .cohesion = nan,
-                              .friction_ratio = nan,
-                              .adhesion_ratio = nan,
-                              .passive_ratio = nan,
-                              .place = {0, 700 + i}};
+    m->soils[i] = kent_soil_blank();
+    (void)snprintf(m->soils[i].source, sizeof m->soils[i].source, "given in the case");
+    m->soils[i].allowable_bearing = allowable_bearing;
+    m->soils[i].unit_weight = unit_weight;
+    m->soils[i].place = (kent_place){0, 700 + i};
     name(m->soils[i].id, id);
     m->ground.soil = i;
     m->ground.cover = cover;
@@ -281,19 +269,11 @@ int kent_build_soil(kent_build *b, const char *id, double allowable_bearing,
 static int add_note(kent_build *b, const char *id, int point)
 {
     kent_model *m = b->model;
-    const double nan = (double)NAN;
     m->notes = one_more(b, NOTES, m->notes, &m->note_count, sizeof *m->notes);
     const int i = (int)m->note_count - 1;
-    m->notes[i] = (kent_fitting_note){.point = point,
-                                      .type = -1,
-                                      .angle = nan,
-                                      .orientation = -1,
-                                      .restraint = -1,
-                                      .soil = -1,
-                                      .cover = nan,
-                                      .weight = nan,
-                                      .face = nan,
-                                      .place = {0, 800 + i}};
+    m->notes[i] = kent_note_blank();
+    m->notes[i].point = point;
+    m->notes[i].place = (kent_place){0, 800 + i};
     name(m->notes[i].id, id);
     return i;
 }
@@ -323,10 +303,12 @@ int kent_build_ports(kent_build *b, const char *id, int type, const kent_port *p
 kent_port kent_build_port(kent_vec3 direction, double pressure, double flow,
                           double inside_diameter)
 {
-    return (kent_port){.direction = direction,
+    return (kent_port){.kind = KENT_PORT_GIVEN,
+                       .direction = direction,
                        .inside_diameter = inside_diameter,
                        .seal_diameter = inside_diameter,
                        .outside_diameter = (double)NAN,
+                       .level = (double)NAN,
                        .momentum_factor = 1.0,
                        .span = -1,
                        .toward = -1,
