@@ -44,6 +44,7 @@ static const coherent COHERENT[] = {
     {KENT_DENSITY, "t/m3", 1e3, "slug/ft3", -4, 1},
     {KENT_VISCOSITY, "kPa s", 1e3, "lbf s/ft2", -2, 1},
     {KENT_ACCELERATION, "m/s2", 1.0, "ft/s2", 1, 0},
+    {KENT_COMPLIANCE, "1/kPa", 1e-3, "ft2/lbf", 2, -1},
     {KENT_RATIO, "", 1.0, "", 0, 0},
 };
 
@@ -73,6 +74,9 @@ static const char *coherent_unit(kent_kind kind, kent_system system, double *wor
         }
         for (int k = 0; k < c->pounds; k++) {
             *worth *= POUND;
+        }
+        for (int k = 0; k > c->pounds; k--) {
+            *worth /= POUND;
         }
         return c->us;
     }

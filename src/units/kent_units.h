@@ -36,6 +36,8 @@
     X(KENT_ANGLE, "an angle", "rad", "deg", 1, "deg", 1, "22.5 deg", "22.5 deg")       \
     X(KENT_ACCELERATION, "an acceleration", "m/s2", "m/s2", 4, "ft/s2", 3,             \
       "9.81 m/s^2", "32.2 ft/s^2")                                                     \
+    X(KENT_COMPLIANCE, "a compliance", "1/Pa", "1/GPa", 4, "1/ksi", 6,                 \
+      "1.06e-10 1/Pa", "7.3e-7 1/psi")                                                 \
     X(KENT_RATIO, "a ratio", "1", "", 3, "", 3, "1.5", "1.5")
 
 #define KENT_AS_ENUM(name, ...) name,

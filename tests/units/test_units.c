@@ -100,6 +100,9 @@ static void short_forms_of_pressure_and_stress_have_their_exact_factors(void **s
         {"1 barg", KENT_PRESSURE, 1e5},
         {"1 MPa", KENT_PRESSURE, 1e6},
         {"1 N/mm2", KENT_PRESSURE, 1e6},
+        {"1 1/ksi", KENT_COMPLIANCE, 0.00064516 / (1000.0 * pound)},
+        {"1.057e-10 1/Pa", KENT_COMPLIANCE, 1.057e-10},
+        {"1 1/MPa", KENT_COMPLIANCE, 1e-6},
         {"1 m head", KENT_PRESSURE, 9806.65},
         {"1 ft head", KENT_PRESSURE, 2989.06692},
         {"1 mH2O", KENT_PRESSURE, 9806.65}, /* not a thousandth of an H2O */
