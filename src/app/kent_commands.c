@@ -294,6 +294,15 @@ static kent_exit print_report(session *s, kent_status status, const kent_text *t
     return status ? fail(s, status) : KENT_EXIT_DONE;
 }
 
+static kent_exit command_keys(session *s)
+{
+    kent_text text = {0};
+    const kent_status status = kent_report_keys(kent_output_gather(&text));
+    const kent_exit code = print_report(s, status, &text);
+    kent_text_clear(&text);
+    return code;
+}
+
 /* What was understood is printed even where no steady state is found. */
 static kent_exit command_check(session *s)
 {
@@ -358,7 +367,7 @@ kent_exit kent_commands_do(const kent_options *o)
         code = command_run(&s);
         break;
     case KENT_CHECK:
-        code = command_check(&s);
+        code = o->keys ? command_keys(&s) : command_check(&s);
         break;
     case KENT_EXPLAIN:
         code = command_explain(&s);

@@ -23,7 +23,8 @@ enum {
     GAVE_QUIET = 1 << 6,
     GAVE_STRICT = 1 << 7,
     GAVE_NO_FILES = 1 << 8,
-    GAVE_ALL = (1 << 9) - 1
+    GAVE_ALL = (1 << 9) - 1, /* of run */
+    GAVE_KEYS = 1 << 9
 };
 
 typedef struct command_row {
@@ -35,7 +36,8 @@ typedef struct command_row {
 
 static const command_row COMMANDS[] = {
     {"run", "one CASE", 1, 1, KENT_RUN, GAVE_ALL},
-    {"check", "one CASE", 1, 1, KENT_CHECK, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
+    {"check", "one CASE", 1, 1, KENT_CHECK,
+     GAVE_UNITS | GAVE_WIDE | GAVE_QUIET | GAVE_KEYS},
     {"explain", "a CASE and a FITTING", 2, 2, KENT_EXPLAIN,
      GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
     {"catalogue", "at most one word", 0, 1, KENT_CATALOGUE_LIST,
@@ -53,6 +55,7 @@ enum { PART_COUNT = sizeof PARTS / sizeof PARTS[0] };
 
 static const char ARGUMENTS[] = "run CASE\n"
                                 "check CASE\n"
+                                "check --keys\n"
                                 "explain CASE FITTING\n"
                                 "catalogue [pipes|materials|valves|soils|rules]";
 
@@ -72,7 +75,15 @@ static const char DOCUMENT[] =
     "else to standard error. Exit status: 0 done; 1 could not be done; 2 bad input or "
     "usage, nothing was written; 3 done, but with --strict a limit is exceeded.";
 
-enum { KEY_NO_FILES = 0x100, KEY_STRICT, KEY_WIDE, KEY_THREADS, KEY_UNITS, KEY_FORMAT };
+enum {
+    KEY_NO_FILES = 0x100,
+    KEY_STRICT,
+    KEY_WIDE,
+    KEY_THREADS,
+    KEY_UNITS,
+    KEY_FORMAT,
+    KEY_KEYS
+};
 
 static const struct argp_option OPTIONS[] = {
     {"out", 'o', "DIR", 0,
@@ -85,6 +96,8 @@ static const struct argp_option OPTIONS[] = {
     {"quiet", 'q', NULL, 0, "Nothing but errors on standard error", 0},
     {"strict", KEY_STRICT, NULL, 0, "Status 3 where a limit is exceeded", 0},
     {"no-files", KEY_NO_FILES, NULL, 0, "Write no folder of results", 0},
+    {"keys", KEY_KEYS, NULL, 0, "Print every key that a case may hold, without a CASE",
+     0},
     {"version", 'V', NULL, 0, "Print the version", -1},
     {0}};
 
@@ -191,7 +204,8 @@ static void check_options(struct argp_state *state, const command_row *c, unsign
         const char *name;
     } NAMES[] = {{GAVE_OUT, "--out"},         {GAVE_SCENARIO, "--scenario"},
                  {GAVE_THREADS, "--threads"}, {GAVE_FORMAT, "--format"},
-                 {GAVE_STRICT, "--strict"},   {GAVE_NO_FILES, "--no-files"}};
+                 {GAVE_STRICT, "--strict"},   {GAVE_NO_FILES, "--no-files"},
+                 {GAVE_KEYS, "--keys"}};
     for (size_t i = 0; i < sizeof NAMES / sizeof NAMES[0]; i++) {
         if ((gave & NAMES[i].bit) && !(c->options & NAMES[i].bit)) {
             argp_error(state, "'%s' has no option %s", c->word, NAMES[i].name);
@@ -210,10 +224,12 @@ static void finish(struct argp_state *state, reading *r)
     const command_row *c = find_command(state, r);
     if (!c) return;
     const size_t after = r->word_count - 1;
-    if (after < c->least || after > c->most) {
+    check_options(state, c, r->gave);
+    if (r->options->keys) {
+        if (after > 0) argp_error(state, "'check --keys' takes no CASE");
+    } else if (after < c->least || after > c->most) {
         argp_error(state, "'%s' takes %s", c->word, c->wants);
     }
-    check_options(state, c, r->gave);
     r->options->command = c->command;
     if (after > 0) r->options->subject = r->words[1];
     if (after > 1) r->options->fitting = r->words[2];
@@ -241,6 +257,10 @@ static bool read_switch(int key, reading *r)
     case KEY_STRICT:
         o->strict = true;
         r->gave |= GAVE_STRICT;
+        return true;
+    case KEY_KEYS:
+        o->keys = true;
+        r->gave |= GAVE_KEYS;
         return true;
     case KEY_NO_FILES:
         o->no_files = true;

@@ -41,6 +41,7 @@ typedef struct kent_options {
     unsigned threads; /* 0: as many as there are processors */
     kent_format format;
     bool wide, quiet, strict, no_files;
+    bool keys; /* check: the key table, no case */
 } kent_options;
 
 /* Reads the command line; o must be all zero. Does not return on --help, --version

@@ -36,6 +36,9 @@ kent_status kent_report_profile_csv(const kent_results *r, size_t scenario,
 kent_status kent_report_check(const kent_model *m, const kent_steady *s,
                               const kent_report_options *o, kent_sink sink);
 
+/* `check --keys`: the key table, as the tables of docs/case-format.md. */
+kent_status kent_report_keys(kent_sink sink);
+
 /* `explain`: one fitting's numbers as a hand calculation. */
 kent_status kent_report_explain(const kent_results *r, int fitting,
                                 const kent_report_options *o, kent_sink sink);

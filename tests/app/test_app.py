@@ -330,6 +330,15 @@ class App(unittest.TestCase):
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 
+    def test_the_key_table_is_printed_without_a_case(self):
+        r = self.call("check", "--keys")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        self.assertIn(r.stdout, (SOURCE / "docs" / "case-format.md").read_text())
+        for args in (["check", "--keys", "main.cfg"], ["run", "--keys", "main.cfg"]):
+            r = self.call(*args)
+            self.assertEqual((r.returncode, r.stdout), (2, ""))
+            self.assertIn("--keys", r.stderr)
+
     def test_every_formula_of_every_case_gives_its_printed_result(self):
         cases = sorted((SOURCE / "cases").glob("*/*/*.cfg"))
         self.assertTrue(cases)
