@@ -102,6 +102,10 @@ static void fill_site(kent_filling *f)
     kent_model *m = f->model;
     m->barometric = kent_barometric_pressure(given(&r, there, "altitude", 0.0));
     m->gravity = given(&r, there, "gravity", m->gravity);
+    if (there && kent_record_has(&r, "station_style")) {
+        const int style = kent_record_field(&r, "station_style")->index;
+        if (style >= 0) f->reader.station_style = (kent_station_style)style;
+    }
     /* Only the vapour limit of a surge knows the weather. */
     if (kent_record_has(&f->root, "pipes") &&
         !(there && kent_record_has(&r, "altitude"))) {
@@ -319,6 +323,7 @@ static void fill_all(kent_filling *f, const char *path)
     kent_reader *r = &f->reader;
     kent_record_read(r, kent_tree_root(r->tree), "case", "", 0, &f->root);
     r->system = kent_record_field(&f->root, "units")->index == 1 ? KENT_US : KENT_SI;
+    r->station_style = r->system == KENT_US ? KENT_100FT_FT : KENT_KM_M;
     fill_head(f, path);
     fill_water(f);
     fill_site(f);

@@ -4,6 +4,7 @@
 #include <math.h>
 #include <stdarg.h>
 #include <stdio.h>
+#include <stdlib.h>
 #include <string.h>
 
 static const struct {
@@ -391,26 +392,50 @@ static void vector(kent_reader *r, kent_record *record, const kent_key *key,
     }
 }
 
-/* "1+198": 1198 m, or 198 + 100 ft where the case is in US units. */
+/* Of each kent_station_style: what the numbers before and after the + count. */
+static const struct {
+    double large;      /* m, what the number before the + counts */
+    double small;      /* m, what the number after it counts */
+    double most;       /* the number after it stays below that */
+    const char *shape; /* for people */
+} STATIONS[] = {
+    [KENT_KM_M] = {1000.0, 1.0, 1000.0, "km+m, as \"1+198\""},
+    [KENT_100M_M] = {100.0, 1.0, 100.0, "100m+m, as \"11+98.5\""},
+    [KENT_100FT_FT] = {30.48, 0.3048, 100.0, "100ft+ft, as \"12+34.5\""},
+};
+
+/* "1+198" by the reader's station_style, or a length. */
 static void station(kent_reader *r, kent_record *record, const kent_key *key,
                     kent_field *f)
 {
+    static const char DIGITS[] = "0123456789";
     const char *s = kent_twig_text(f->twig);
-    const char *plus = s ? strchr(s, '+') : NULL;
-    long whole = 0;
-    double part = 0.0;
-    char after = '\0';
-    if (!plus || plus == s || plus[1] < '0' || plus[1] > '9') {
+    const size_t before = s ? strspn(s, DIGITS) : 0;
+    double part = NAN;
+    kent_error err = {0};
+    if (!s || !strchr(s, '+') || s[0] == '+') {
         f->number = read_quantity(r, record, key->key, f->twig, KENT_LENGTH);
         return;
     }
-    if (sscanf(s, "%9ld+%12lf%c", &whole, &part, &after) != 2) { /* NOLINT: checked */
+    const char *after = s + before + 1;
+    if (before == 0 || before > 6 || s[before] != '+' ||
+        strspn(after, "0123456789.") != strlen(after) ||
+        kent_units_read(r->units, after, KENT_RATIO, &part, &err) != KENT_OK) {
+        if (err.status == KENT_E_NOMEM) r->failed = true;
         complain(r, record, f->twig,
-                 "station = \"%.40s\" is no station; write \"1+198\" or a length", s);
-        return;
+                 "%s = \"%.40s\" is no station; write \"1+198\" or a length, as "
+                 "\"1198 m\"",
+                 key->key, s);
+    } else if (part >= STATIONS[r->station_style].most) {
+        complain(r, record, f->twig,
+                 "%s = \"%.40s\" is no station of style %s: what follows the + stays "
+                 "below %g; site.station_style says how stations are written",
+                 key->key, s, STATIONS[r->station_style].shape,
+                 STATIONS[r->station_style].most);
+    } else {
+        f->number = STATIONS[r->station_style].large * (double)strtol(s, NULL, 10) +
+                    STATIONS[r->station_style].small * part;
     }
-    f->number = r->system == KENT_US ? 0.3048 * (100.0 * (double)whole + part)
-                                     : 1000.0 * (double)whole + part;
 }
 
 /* "45 deg right": rad, positive to the left. */

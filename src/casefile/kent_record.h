@@ -28,11 +28,19 @@ typedef enum kent_shelf {
     KENT_SHELF_COUNT
 } kent_shelf;
 
+/* What "1+198" means; in the order of the words of site.station_style. */
+typedef enum kent_station_style {
+    KENT_KM_M,
+    KENT_100M_M,
+    KENT_100FT_FT
+} kent_station_style;
+
 typedef struct kent_reader {
     const kent_tree *tree;
     kent_units *units; /* the caller's: one database serves every file */
     kent_complaints *complaints;
-    kent_system system; /* what "1+198" means */
+    kent_system system; /* of examples in messages */
+    kent_station_style station_style;
     kent_directory shelves[KENT_SHELF_COUNT];
     bool failed; /* out of memory */
 } kent_reader;

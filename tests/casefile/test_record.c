@@ -296,15 +296,36 @@ static double station_of(kent_reader *r, const char *text)
     return kent_record_number(&record, "station");
 }
 
-static void a_station_counts_kilometres_or_hundreds_of_feet(void **state)
+static void a_station_counts_by_its_style(void **state)
 {
     (void)state;
     kent_reader r = reader();
     assert_close(station_of(&r, "station = \"1+198\";\n"), 1198.0, 1e-15);
     assert_close(station_of(&r, "station = \"0+012.5\";\n"), 12.5, 1e-15);
     assert_close(station_of(&r, "station = \"350 m\";\n"), 350.0, 1e-15);
-    r.system = KENT_US;
-    assert_close(station_of(&r, "station = \"12+34\";\n"), 1234.0 * 0.3048, 1e-15);
+    r.station_style = KENT_100M_M;
+    assert_close(station_of(&r, "station = \"11+98.5\";\n"), 1198.5, 1e-15);
+    r.station_style = KENT_100FT_FT; /* 100 international feet of 0.3048 m */
+    assert_close(station_of(&r, "station = \"12+34.5\";\n"), 1234.5 * 0.3048, 1e-15);
+    reader_end(&r);
+}
+
+/* What follows the + tells a station of one style from one of another. */
+static void a_station_of_another_style_is_refused(void **state)
+{
+    (void)state;
+    kent_reader r = reader();
+    const kent_key *k = kent_key_find("point", "station");
+    static const char *const BAD[] = {"1+",  "1+19x", "1+1e2",  "1 + 5",
+                                      "a+5", "1+2+3", "1+1.2.3"};
+    for (size_t i = 0; i < sizeof BAD / sizeof BAD[0]; i++) {
+        char value[40];
+        (void)snprintf(value, sizeof value, "\"%s\"", BAD[i]);
+        assert_true(refused(&r, k, value, "is no station; write"));
+    }
+    assert_true(refused(&r, k, "\"1+1000\"", "stays below 1000"));
+    r.station_style = KENT_100FT_FT;
+    assert_true(refused(&r, k, "\"1+198\"", "stays below 100; site.station_style"));
     reader_end(&r);
 }
 
@@ -359,7 +380,8 @@ int main(void)
         cmocka_unit_test(every_required_key_is_missed),
         cmocka_unit_test(every_key_of_a_later_version_is_refused_as_such),
         cmocka_unit_test(every_key_with_a_letter_lost_is_refused),
-        cmocka_unit_test(a_station_counts_kilometres_or_hundreds_of_feet),
+        cmocka_unit_test(a_station_counts_by_its_style),
+        cmocka_unit_test(a_station_of_another_style_is_refused),
         cmocka_unit_test(spelling_variants_are_the_same_key),
         cmocka_unit_test(names_that_cannot_stand_in_files_are_refused),
     };
