@@ -17,6 +17,21 @@ typedef struct kent_filling {
     size_t port_capacity;
 } kent_filling;
 
+/* Reads the group under a key of a record; without one *out is empty. Returns whether
+ * it was there. */
+bool kent_fill_group(kent_filling *f, const kent_record *parent, const char *key,
+                     kent_record *out);
+
+/* What stands once in a case; each notes what it assumes. Ground and loads come after
+ * the lists that they refer to. */
+void kent_fill_head(kent_filling *f, const char *path);
+void kent_fill_water(kent_filling *f);
+void kent_fill_site(kent_filling *f);
+void kent_fill_rules(kent_filling *f);
+void kent_fill_ground(kent_filling *f);
+void kent_fill_loads(kent_filling *f);
+void kent_fill_solver(kent_filling *f);
+
 /* Moves the index-th element of a list; its place in the model's array stands zeroed.
  */
 typedef void kent_fill_one(kent_filling *f, kent_record *record, size_t index);

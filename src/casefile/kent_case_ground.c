@@ -1,0 +1,83 @@
+/* Soils, and the ground along the main. */
+#include "kent_case_internal.h"
+
+#include <math.h>
+#include <stdio.h>
+#include <string.h>
+
+/* ---- soils ----------------------------------------------------------------------- */
+
+static void assume_bearing(kent_filling *f, const kent_soil *row)
+{
+    char what[96];
+    (void)snprintf(what, sizeof what, "allowable bearing of %s", row->id);
+    kent_fill_assume_value(f, what, row->allowable_bearing, KENT_STRESS, row->source);
+}
+
+void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
+{
+    kent_soil *s = &f->model->soils[index];
+    const int row = kent_record_field(record, "from")->index;
+    *s = kent_soil_blank();
+    (void)snprintf(s->source, sizeof s->source, "given in the case");
+    if (row >= 0) {
+        const kent_soil *from = &f->catalogue->soils[row];
+        *s = *from;
+        (void)snprintf(s->source, sizeof s->source, "given in the case, else %.150s",
+                       from->source);
+        if (!kent_record_has(record, "allowable_bearing")) assume_bearing(f, from);
+    }
+    if (kent_record_has(record, "source")) {
+        kent_record_copy(record, "source", NULL, s->source, sizeof s->source);
+    }
+    kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
+    kent_record_soil(record, s);
+    s->place = record->place;
+    if (!record->sound) return;
+    if (isnan(s->allowable_bearing)) {
+        kent_record_complain(
+            &f->reader, record, NULL,
+            "allowable_bearing is missing; give it, or name a soil of the "
+            "catalogue by from");
+    } else if (row < 0 && !kent_record_has(record, "factor_inside") &&
+               s->allowable_bearing > 0.0) {
+        char what[96];
+        (void)snprintf(what, sizeof what, "factor inside the bearing of %s", s->id);
+        kent_fill_assume(f, what, "1.0", "factor_inside not given");
+    }
+}
+
+int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char *key)
+{
+    kent_model *m = f->model;
+    const kent_field *field = kent_record_field(record, key);
+    if (!field->from_catalogue) return field->index;
+
+    const kent_soil *row = &f->catalogue->soils[field->index];
+    for (size_t i = 0; i < m->soil_count; i++) {
+        if (strcmp(m->soils[i].id, row->id) == 0) return (int)i;
+    }
+    m->soils[m->soil_count] = *row; /* room was made for every row */
+    assume_bearing(f, row);
+    return (int)m->soil_count++;
+}
+
+/* ---- ground ---------------------------------------------------------------------- */
+
+void kent_fill_ground(kent_filling *f)
+{
+    kent_record r;
+    const bool there = kent_fill_group(f, &f->root, "ground", &r);
+    kent_ground *g = &f->model->ground;
+    if (there) {
+        g->soil = kent_fill_soil_index(f, &r, "soil");
+        g->cover = kent_record_number(&r, "cover");
+        g->wrapped = kent_record_switch(&r, "wrapped", false);
+    }
+    if (there && kent_record_has(&r, "water_table")) {
+        g->water_table = kent_record_number(&r, "water_table");
+    } else {
+        kent_fill_assume(f, "ground water", "none",
+                         "no water_table given for the ground");
+    }
+}

@@ -1,0 +1,137 @@
+/* What stands once in a case: its head, water, site, solver and design rules. */
+#include "kent_case_internal.h"
+
+#include <math.h>
+#include <stdio.h>
+#include <string.h>
+
+static double given(const kent_record *record, bool there, const char *key,
+                    double other)
+{
+    return there ? kent_record_number_or(record, key, other) : other;
+}
+
+void kent_fill_head(kent_filling *f, const char *path)
+{
+    kent_model *m = f->model;
+    kent_record project;
+    const char *slash = strrchr(path, '/');
+    char name[160];
+    (void)snprintf(name, sizeof name, "%s",
+                   strcmp(path, "-") == 0 ? "standard input"
+                   : slash                ? slash + 1
+                                          : path);
+    const size_t length = strlen(name);
+    if (length > 4 && strcmp(name + length - 4, ".cfg") == 0) name[length - 4] = '\0';
+
+    kent_record_copy(&f->root, "title", name, m->title, sizeof m->title);
+    m->units = f->shown ? *f->shown : f->reader.system;
+    if (!kent_fill_group(f, &f->root, "project", &project)) return;
+    kent_project *p = &m->project;
+    kent_record_copy(&project, "number", NULL, p->number, sizeof p->number);
+    kent_record_copy(&project, "drawing", NULL, p->drawing, sizeof p->drawing);
+    kent_record_copy(&project, "revision", NULL, p->revision, sizeof p->revision);
+    kent_record_copy(&project, "designer", NULL, p->designer, sizeof p->designer);
+    kent_record_copy(&project, "checker", NULL, p->checker, sizeof p->checker);
+}
+
+void kent_fill_water(kent_filling *f)
+{
+    static const double USUAL = 288.15; /* K, 15 degC */
+    kent_record r;
+    const bool there = kent_fill_group(f, &f->root, "water", &r);
+    const bool warm = there && kent_record_has(&r, "temperature");
+    const bool all = there && kent_record_has(&r, "density") &&
+                     kent_record_has(&r, "bulk_modulus") &&
+                     kent_record_has(&r, "viscosity") &&
+                     kent_record_has(&r, "vapour_pressure");
+    kent_water water = kent_water_at(given(&r, there, "temperature", USUAL));
+    if (!warm && !all) {
+        kent_fill_assume_value(f, "water temperature", USUAL, KENT_TEMPERATURE,
+                               "no temperature given");
+    }
+    water.density = given(&r, there, "density", water.density);
+    water.bulk_modulus = given(&r, there, "bulk_modulus", water.bulk_modulus);
+    water.viscosity = given(&r, there, "viscosity", water.viscosity);
+    water.vapour_pressure = given(&r, there, "vapour_pressure", water.vapour_pressure);
+    water.sound_speed = sqrt(water.bulk_modulus / water.density);
+    f->model->water = water;
+}
+
+void kent_fill_site(kent_filling *f)
+{
+    kent_record r;
+    const bool there = kent_fill_group(f, &f->root, "site", &r);
+    kent_model *m = f->model;
+    m->barometric = kent_barometric_pressure(given(&r, there, "altitude", 0.0));
+    m->gravity = given(&r, there, "gravity", m->gravity);
+    if (there && kent_record_has(&r, "station_style")) {
+        const int style = kent_record_field(&r, "station_style")->index;
+        if (style >= 0) f->reader.station_style = (kent_station_style)style;
+    }
+    /* Only the vapour limit of a surge knows the weather. */
+    if (kent_record_has(&f->root, "pipes") &&
+        !(there && kent_record_has(&r, "altitude"))) {
+        kent_fill_assume_value(f, "barometric pressure", m->barometric, KENT_PRESSURE,
+                               "no altitude given: sea level");
+    }
+}
+
+void kent_fill_solver(kent_filling *f)
+{
+    kent_record r;
+    kent_solver *s = &f->model->solver;
+    if (!kent_fill_group(f, &f->root, "solver", &r)) return;
+    if (kent_record_has(&r, "friction")) {
+        s->friction = (kent_surge_friction)kent_record_field(&r, "friction")->index;
+    }
+    s->grid_check = kent_record_switch(&r, "grid_check", s->grid_check);
+    s->wave_speed_tolerance =
+        kent_record_number_or(&r, "wave_speed_tolerance", s->wave_speed_tolerance);
+    s->time_step = kent_record_number(&r, "time_step");
+    if (kent_record_has(&r, "time_step")) {
+        s->place =
+            kent_tree_place(f->reader.tree, kent_record_field(&r, "time_step")->twig);
+    }
+    const double reaches = kent_record_number_or(&r, "min_reaches", s->min_reaches);
+    const double rows = kent_record_number_or(&r, "history_rows", s->history_rows);
+    if (!r.sound) return;
+    s->min_reaches = (int)reaches;
+    s->history_rows = (int)rows;
+}
+
+void kent_fill_rules(kent_filling *f)
+{
+    static const char *const USUAL[] = {
+        [KENT_SI] = "common-practice", [KENT_US] = "common-practice-US"};
+    const char *usual = USUAL[f->reader.system]; /* the case's, however it is shown */
+    kent_record r;
+    const bool there = kent_fill_group(f, &f->root, "design_rules", &r);
+    int set = there ? kent_record_field(&r, "set")->index : -1;
+    if (set < 0) {
+        set = kent_directory_find(&f->reader.shelves[KENT_SHELF_RULES], usual);
+        kent_fill_assume(f, "design rules", usual, "no set of rules named");
+    }
+    if (set < 0 || (size_t)set >= f->catalogue->rule_count) {
+        kent_complain(
+            f->reader.complaints, kent_tree_file(f->reader.tree, 0), 1,
+            "the catalogue has no set of rules \"%s\"; name one in design_rules",
+            usual);
+        return;
+    }
+    kent_rules *rules = &f->model->rules;
+    *rules = f->catalogue->rules[set];
+    if (!there) return;
+    kent_record_rules(&r, rules);
+    for (size_t i = 0; i < r.count; i++) {
+        const char *key = r.keys[i].key;
+        if (!r.fields[i].twig || strcmp(key, "set") == 0) continue;
+        kent_notes_add(&f->model->cautions,
+                       "design rule %s is the case's own, not that of \"%s\"", key,
+                       rules->id);
+    }
+    if (r.sound && rules->width_to_height[0] > rules->width_to_height[1]) {
+        kent_record_complain(&f->reader, &r, NULL,
+                             "width_to_height_least is above width_to_height_most");
+    }
+}
