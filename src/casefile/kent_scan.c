@@ -7,12 +7,9 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
-#include <sys/stat.h>
 
 enum {
-    SIZE_MOST = 64 * 1024 * 1024, /* bytes of all files together */
-    LINE_MOST = 65536,            /* bytes */
-    STRING_MOST = 4096,           /* bytes; libconfig takes quadratic time in it */
+    STRING_MOST = 4096, /* bytes; libconfig takes quadratic time in it */
     NEST_MOST = 32,
     INCLUDE_MOST = 8,
     LEXEME_SHOWN = 40 /* bytes of an offending word that a message repeats */
@@ -30,7 +27,7 @@ typedef enum token {
 
 typedef struct source {
     char *bytes; /* owned, NUL-terminated */
-    size_t size, at, line_start;
+    size_t size, at;
     int file, line;
 } source;
 
@@ -41,18 +38,16 @@ typedef struct bracket {
 } bracket;
 
 typedef struct scanner {
+    kent_files *files;
     kent_scan *out;
     kent_complaints *complaints;
     kent_error *err;
-    size_t folder_length; /* of the case's own folder at the start of its path */
-    const char *path;
     source stack[INCLUDE_MOST];
     int depth;
     bracket brackets[NEST_MOST];
     int nest;
     token last, last_but_one;
     char last_name[LEXEME_SHOWN + 1];
-    size_t total; /* bytes read so far */
     bool stopped; /* out of memory, or nothing sensible can follow */
 } scanner;
 
@@ -66,7 +61,7 @@ __attribute__((format(printf, 3, 4))) static void complain(scanner *s, int line,
     va_start(args, fmt);
     (void)vsnprintf(what, sizeof what, fmt, args);
     va_end(args);
-    kent_complain(s->complaints, s->out->files[top(s)->file], line, "%s", what);
+    kent_complain(s->complaints, s->files->names[top(s)->file], line, "%s", what);
 }
 
 /* Appends bytes of the top source; notes where each new line of text comes from. */
@@ -97,127 +92,10 @@ static void emit(scanner *s, const char *bytes, size_t count)
 
 /* ---- files ----------------------------------------------------------------------- */
 
-static kent_status slurp(FILE *file, size_t most, char **bytes, size_t *size,
-                         kent_error *err, const char *name)
+static void push(scanner *s, const kent_source *from)
 {
-    size_t capacity = 0;
-    *size = 0;
-    for (;;) {
-        if (kent_grow((void **)bytes, &capacity, *size + 65536 + 1, 1) != 0) {
-            return kent_error_nomem(err);
-        }
-        const size_t got = fread(*bytes + *size, 1, 65536, file);
-        *size += got;
-        if (ferror(file)) {
-            return kent_error_set(err, KENT_E_IO, name, "cannot be read: %s",
-                                  strerror(errno));
-        }
-        if (got == 0 || *size > most) break;
-    }
-    (*bytes)[*size] = '\0';
-    return KENT_OK;
-}
-
-/* What no line of a file may hold. Returns whether lexing makes sense. */
-static bool bytes_are_text(scanner *s)
-{
-    source *src = top(s);
-    const unsigned char *p = (const unsigned char *)src->bytes;
-    if (src->size >= 3 && memcmp(p, "\xEF\xBB\xBF", 3) == 0) {
-        complain(
-            s, 1,
-            "the file starts with a byte-order mark; save it as UTF-8 without one");
-        return false;
-    }
-    if (src->size >= 2 &&
-        (memcmp(p, "\xFF\xFE", 2) == 0 || memcmp(p, "\xFE\xFF", 2) == 0)) {
-        complain(s, 1, "the file is UTF-16; save it as UTF-8");
-        return false;
-    }
-    int line = 1;
-    size_t start = 0;
-    for (size_t i = 0; i < src->size;) {
-        if (p[i] == '\0') {
-            complain(s, line,
-                     "the line holds a NUL byte; a case is plain text in UTF-8");
-            return false;
-        }
-        const size_t n = kent_text_sequence(src->bytes + i);
-        if (n == 0) {
-            complain(s, line, "byte 0x%02X is not UTF-8; save the file as UTF-8",
-                     (unsigned)p[i]);
-            return false;
-        }
-        if (i - start > LINE_MOST) {
-            complain(s, line, "the line is longer than %d bytes; break it", LINE_MOST);
-            return false;
-        }
-        if (p[i] == '\n') {
-            line++;
-            start = i + 1;
-        }
-        i += n;
-    }
-    return true;
-}
-
-/* "\r\n" and lone "\r" become "\n". */
-static void unify_line_ends(source *src)
-{
-    size_t to = 0;
-    for (size_t i = 0; i < src->size; i++) {
-        if (src->bytes[i] != '\r') {
-            src->bytes[to++] = src->bytes[i];
-        } else if (src->bytes[i + 1] != '\n') {
-            src->bytes[to++] = '\n';
-        }
-    }
-    src->bytes[to] = '\0';
-    src->size = to;
-}
-
-static int file_add(scanner *s, const char *name)
-{
-    kent_scan *out = s->out;
-    if (kent_grow((void **)&out->files, &out->file_capacity, out->file_count + 1,
-                  sizeof *out->files) != 0) {
-        return -1;
-    }
-    out->files[out->file_count] = kent_copy_text(name);
-    if (!out->files[out->file_count]) return -1;
-    return (int)out->file_count++;
-}
-
-/* Puts an open file on the stack; takes nothing: the caller closes it. */
-static void push(scanner *s, FILE *file, const char *shown)
-{
-    source src = {.line = 1};
-    const int index = file_add(s, shown);
-    if (index < 0) {
-        (void)kent_error_nomem(s->err);
-        s->stopped = true;
-        return;
-    }
-    src.file = index;
-    if (slurp(file, SIZE_MOST - s->total, &src.bytes, &src.size, s->err, shown)) {
-        free(src.bytes);
-        s->stopped = true;
-        return;
-    }
-    s->total += src.size;
-    for (size_t i = 0; i < src.size; i++) {
-        s->out->checksum ^= (unsigned char)src.bytes[i];
-        s->out->checksum *= 1099511628211ULL;
-    }
-    s->stack[s->depth++] = src;
-    if (s->total > SIZE_MOST) {
-        complain(s, 1, "the case is larger than %d MB", SIZE_MOST / (1024 * 1024));
-        s->stopped = true;
-    } else if (!bytes_are_text(s)) {
-        s->stopped = true;
-    } else {
-        unify_line_ends(top(s));
-    }
+    s->stack[s->depth++] = (source){
+        .bytes = from->bytes, .size = from->size, .file = from->file, .line = 1};
 }
 
 static void pop(scanner *s)
@@ -529,40 +407,23 @@ static size_t lex_sign(scanner *s, const char *p)
 
 static void include(scanner *s, const char *name, int line)
 {
-    char path[1024];
-    FILE *file = NULL;
-    struct stat kind = {0};
-    if (name[0] == '/' || name[0] == '\0' || strstr(name, "..") || strchr(name, '\\')) {
-        complain(s, line,
-                 "@include \"%.60s\" leaves the folder of the case; only files of that "
-                 "folder can be included",
-                 name);
-        return;
-    }
+    char says[100];
+    kent_source found = {0};
+    const kent_place at = {top(s)->file, line};
+    (void)snprintf(says, sizeof says, "@include \"%.60s\"", name);
     if (s->depth == INCLUDE_MOST) {
-        complain(s, line,
-                 "@include \"%.60s\": files include each other more than %d deep", name,
+        complain(s, line, "%s: files include each other more than %d deep", says,
                  INCLUDE_MOST);
         s->stopped = true;
         return;
     }
-    const int n =
-        snprintf(path, sizeof path, "%.*s%s", (int)s->folder_length, s->path, name);
-    if (n < 0 || (size_t)n >= sizeof path) {
-        complain(s, line, "@include \"%.60s\": the path is too long", name);
-        return;
+    const kent_status status = kent_files_beside(s->files, name, says, at, false,
+                                                 &found, s->complaints, s->err);
+    if (status == KENT_OK) {
+        push(s, &found);
+    } else if (status != KENT_E_INPUT) {
+        s->stopped = true;
     }
-    if (stat(path, &kind) == 0 && !S_ISREG(kind.st_mode)) {
-        complain(s, line, "@include \"%.60s\" is not a file", name);
-        return;
-    }
-    file = fopen(path, "rb");
-    if (!file) {
-        complain(s, line, "@include \"%.60s\": %s", name, strerror(errno));
-        return;
-    }
-    push(s, file, path);
-    (void)fclose(file);
 }
 
 /* A line that starts with '@'; it is replaced by the file it names. */
@@ -659,7 +520,7 @@ static void scan_all(scanner *s)
     }
     if (s->depth > 0 && !s->stopped && s->nest > 0) {
         const bracket *in = &s->brackets[s->nest - 1];
-        kent_complain(s->complaints, s->out->files[in->file], in->line,
+        kent_complain(s->complaints, s->files->names[in->file], in->line,
                       "the '%c' of this line is never closed by '%s'", in->open,
                       open_word(in->open));
     }
@@ -668,50 +529,31 @@ static void scan_all(scanner *s)
     }
 }
 
-kent_status kent_scan_read(const char *path, kent_scan *out,
+kent_status kent_scan_read(const char *path, kent_files *files, kent_scan *out,
                            kent_complaints *complaints, kent_error *err)
 {
-    const bool standard_input = strcmp(path, "-") == 0;
-    const char *slash = strrchr(path, '/');
     const size_t before = complaints->count;
-    kent_status status = KENT_OK;
+    kent_source first = {0};
+    kent_status status = kent_files_start(files, path, &first, complaints, err);
+    if (status != KENT_OK) return status;
     scanner *s = kent_alloc(1, sizeof *s);
-    FILE *file = standard_input ? stdin : fopen(path, "rb");
-
     if (!s) {
-        status = kent_error_nomem(err);
-        goto done;
+        free(first.bytes);
+        return kent_error_nomem(err);
     }
-    if (!file) {
-        status = kent_error_set(err, KENT_E_IO, path, "cannot be opened: %s",
-                                strerror(errno));
-        goto done;
-    }
-    *s = (scanner){.out = out, .complaints = complaints, .err = err, .path = path};
-    s->folder_length = slash ? (size_t)(slash - path) + 1 : 0;
-    out->checksum = 14695981039346656037ULL;
-    push(s, file, standard_input ? "standard input" : path);
+    *s = (scanner){.files = files, .out = out, .complaints = complaints, .err = err};
+    push(s, &first);
     scan_all(s);
-    if (err->status != KENT_OK) {
-        status = err->status;
-    } else if (complaints->count > before) {
-        status = KENT_E_INPUT;
-    } else if (!out->text) {
-        kent_complain(complaints, out->files[0], 1, "the file is empty");
-        status = KENT_E_INPUT;
-    }
-done:
-    if (file && !standard_input) (void)fclose(file);
     free(s);
-    return status;
+    if (err->status != KENT_OK) return err->status;
+    if (complaints->count == before && !out->text) {
+        kent_complain(complaints, files->names[0], 1, "the file is empty");
+    }
+    return complaints->count > before ? KENT_E_INPUT : KENT_OK;
 }
 
 void kent_scan_clear(kent_scan *s)
 {
-    for (size_t i = 0; i < s->file_count; i++) {
-        free(s->files[i]);
-    }
-    free(s->files);
     free(s->lines);
     free(s->text);
     *s = (kent_scan){0};

@@ -4,21 +4,19 @@
 #ifndef KENT_SCAN_H
 #define KENT_SCAN_H
 
-#include "kent_model.h"
+#include "kent_files.h"
 
 typedef struct kent_scan {
     char *text; /* NUL-terminated, lines end in '\n' */
     size_t length, text_capacity;
     kent_place *lines; /* [line_count] where each line of text came from */
     size_t line_count, line_capacity;
-    char **files; /* [file_count] as they are shown to people */
-    size_t file_count, file_capacity;
-    unsigned long long checksum; /* FNV-1a of all bytes read, in order */
 } kent_scan;
 
-/* kent_scan s = {0}; is a valid, empty one. path "-": standard input. Fails with
- * KENT_E_IO (err), KENT_E_NOMEM (err) or KENT_E_INPUT (complaints were added). */
-kent_status kent_scan_read(const char *path, kent_scan *out,
+/* kent_scan s = {0}; is a valid, empty one. path "-": standard input. Names of what it
+ * reads go into files, an empty one before. Fails with KENT_E_IO (err), KENT_E_NOMEM
+ * (err) or KENT_E_INPUT (complaints were added). */
+kent_status kent_scan_read(const char *path, kent_files *files, kent_scan *out,
                            kent_complaints *complaints, kent_error *err);
 void kent_scan_clear(kent_scan *s);
 

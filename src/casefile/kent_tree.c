@@ -8,21 +8,11 @@
 #include <string.h>
 
 struct kent_tree {
-    kent_scan scan;
-    config_t config;
-    bool parsed; /* config is initialised */
+    kent_files files;
+    kent_twig *twigs; /* [twig_count]; the root first */
+    char *texts;      /* [text_size] of names and texts, each ending in NUL */
+    size_t twig_count, text_size;
 };
-
-/* A twig is libconfig's setting under a name of ours. */
-static const config_setting_t *setting_of(const kent_twig *twig)
-{
-    return (const config_setting_t *)twig;
-}
-
-static const kent_twig *twig_of(const config_setting_t *setting)
-{
-    return (const kent_twig *)setting;
-}
 
 static kent_place place_of_line(const kent_scan *scan, int line)
 {
@@ -76,13 +66,14 @@ static const char *repeated_name(const char *line, int *length)
 }
 
 /* libconfig's bare reasons in our words. */
-static void complain_of_syntax(const kent_tree *t, kent_complaints *complaints)
+static void complain_of_syntax(const kent_files *files, const kent_scan *scan,
+                               const config_t *config, kent_complaints *complaints)
 {
-    const int line = config_error_line(&t->config);
-    const kent_place place = place_of_line(&t->scan, line);
-    const char *file = t->scan.files[place.file];
-    const char *why = config_error_text(&t->config);
-    const char *text = line_text(&t->scan, line);
+    const int line = config_error_line(config);
+    const kent_place place = place_of_line(scan, line);
+    const char *file = files->names[place.file];
+    const char *why = config_error_text(config);
+    const char *text = line_text(scan, line);
     int length = 0;
 
     text += strspn(text, " \t");
@@ -105,67 +96,40 @@ static void complain_of_syntax(const kent_tree *t, kent_complaints *complaints)
     }
 }
 
-kent_status kent_tree_read(const char *path, kent_tree **out,
-                           kent_complaints *complaints, kent_error *err)
+/* ---- from settings to twigs ------------------------------------------------------ */
+
+static size_t child_count(const config_setting_t *setting)
 {
-    kent_status status = KENT_OK;
-    kent_tree *t = kent_alloc(1, sizeof *t);
-    if (!t) return kent_error_nomem(err);
+    return config_setting_is_aggregate(setting) ? (size_t)config_setting_length(setting)
+                                                : 0;
+}
 
-    /* Numbers have a decimal point whatever the caller's locale says. */
-    const locale_t plain = newlocale(LC_NUMERIC_MASK, "C", (locale_t)0);
-    const locale_t before = plain ? uselocale(plain) : (locale_t)0;
-
-    status = kent_scan_read(path, &t->scan, complaints, err);
-    if (status != KENT_OK) goto done;
-    config_init(&t->config);
-    t->parsed = true;
-    if (config_read_string(&t->config, t->scan.text) != CONFIG_TRUE) {
-        complain_of_syntax(t, complaints);
-        status = KENT_E_INPUT;
-        goto done;
+/* Adds what a setting and all below it need. As deep as the scanner lets them nest. */
+static void measure(kent_tree *t, const config_setting_t *setting)
+{
+    const char *name = config_setting_name(setting);
+    t->twig_count++;
+    t->text_size += name ? strlen(name) + 1 : 0;
+    if (config_setting_type(setting) == CONFIG_TYPE_STRING) {
+        t->text_size += strlen(config_setting_get_string(setting)) + 1;
     }
-    *out = t;
-    t = NULL;
-done:
-    if (plain) {
-        (void)uselocale(before);
-        freelocale(plain);
+    for (size_t i = 0; i < child_count(setting); i++) {
+        measure(t, config_setting_get_elem(setting, (unsigned)i));
     }
-    kent_tree_free(t);
-    return status;
 }
 
-void kent_tree_free(kent_tree *t)
+static const char *keep_text(kent_tree *t, const char *text)
 {
-    if (!t) return;
-    if (t->parsed) config_destroy(&t->config);
-    kent_scan_clear(&t->scan);
-    free(t);
+    char *copy = t->texts + t->text_size;
+    const size_t size = strlen(text) + 1;
+    memcpy(copy, text, size);
+    t->text_size += size;
+    return copy;
 }
 
-const kent_twig *kent_tree_root(const kent_tree *t)
+static kent_twig_type type_of(const config_setting_t *setting)
 {
-    return twig_of(config_root_setting(&t->config));
-}
-
-size_t kent_tree_file_count(const kent_tree *t) { return t->scan.file_count; }
-
-const char *kent_tree_file(const kent_tree *t, size_t index)
-{
-    return t->scan.files[index];
-}
-
-unsigned long long kent_tree_checksum(const kent_tree *t) { return t->scan.checksum; }
-
-kent_place kent_tree_place(const kent_tree *t, const kent_twig *twig)
-{
-    return place_of_line(&t->scan, (int)config_setting_source_line(setting_of(twig)));
-}
-
-kent_twig_type kent_twig_type_of(const kent_twig *twig)
-{
-    switch (config_setting_type(setting_of(twig))) {
+    switch (config_setting_type(setting)) {
     case CONFIG_TYPE_GROUP:
         return KENT_TWIG_GROUP;
     case CONFIG_TYPE_STRING:
@@ -182,9 +146,129 @@ kent_twig_type kent_twig_type_of(const kent_twig *twig)
     }
 }
 
+static double number_of(const config_setting_t *setting)
+{
+    switch (config_setting_type(setting)) {
+    case CONFIG_TYPE_INT:
+        return (double)config_setting_get_int(setting);
+    case CONFIG_TYPE_INT64:
+        return (double)config_setting_get_int64(setting);
+    case CONFIG_TYPE_FLOAT:
+        return config_setting_get_float(setting);
+    case CONFIG_TYPE_BOOL:
+        return (double)config_setting_get_bool(setting);
+    default:
+        return NAN;
+    }
+}
+
+/* Fills *out, and its children into the twigs behind those taken already. */
+static void take(kent_tree *t, const kent_scan *scan, const config_setting_t *setting,
+                 kent_twig *out)
+{
+    const char *name = config_setting_name(setting);
+    const size_t count = child_count(setting);
+    kent_twig *children = &t->twigs[t->twig_count];
+    t->twig_count += count;
+    *out = (kent_twig){
+        .type = type_of(setting),
+        .place = place_of_line(scan, (int)config_setting_source_line(setting)),
+        .name = name ? keep_text(t, name) : "",
+        .number = number_of(setting),
+        .children = children,
+        .count = count};
+    if (out->type == KENT_TWIG_TEXT) {
+        out->text = keep_text(t, config_setting_get_string(setting));
+    }
+    for (size_t i = 0; i < count; i++) {
+        take(t, scan, config_setting_get_elem(setting, (unsigned)i), &children[i]);
+    }
+}
+
+static kent_status take_all(kent_tree *t, const kent_scan *scan, const config_t *config,
+                            kent_error *err)
+{
+    const config_setting_t *root = config_root_setting(config);
+    measure(t, root);
+    t->twigs = kent_alloc(t->twig_count, sizeof *t->twigs);
+    t->texts = kent_alloc(t->text_size, 1);
+    if (!t->twigs || !t->texts) return kent_error_nomem(err);
+    t->twig_count = 1;
+    t->text_size = 0;
+    take(t, scan, root, &t->twigs[0]);
+    return KENT_OK;
+}
+
+kent_status kent_tree_read(const char *path, kent_tree **out,
+                           kent_complaints *complaints, kent_error *err)
+{
+    kent_scan scan = {0};
+    config_t config;
+    kent_tree *t = kent_alloc(1, sizeof *t);
+    if (!t) return kent_error_nomem(err);
+
+    /* Numbers have a decimal point whatever the caller's locale says. */
+    const locale_t plain = newlocale(LC_NUMERIC_MASK, "C", (locale_t)0);
+    const locale_t before = plain ? uselocale(plain) : (locale_t)0;
+
+    config_init(&config);
+    kent_status status = kent_scan_read(path, &t->files, &scan, complaints, err);
+    if (status != KENT_OK) goto done;
+    if (config_read_string(&config, scan.text) != CONFIG_TRUE) {
+        complain_of_syntax(&t->files, &scan, &config, complaints);
+        status = KENT_E_INPUT;
+        goto done;
+    }
+    status = take_all(t, &scan, &config, err);
+    if (status != KENT_OK) goto done;
+    *out = t;
+    t = NULL;
+done:
+    if (plain) {
+        (void)uselocale(before);
+        freelocale(plain);
+    }
+    config_destroy(&config);
+    kent_scan_clear(&scan);
+    kent_tree_free(t);
+    return status;
+}
+
+void kent_tree_free(kent_tree *t)
+{
+    if (!t) return;
+    kent_files_clear(&t->files);
+    free(t->twigs);
+    free(t->texts);
+    free(t);
+}
+
+/* ---- looking at them ------------------------------------------------------------- */
+
+const kent_twig *kent_tree_root(const kent_tree *t) { return &t->twigs[0]; }
+
+kent_files *kent_tree_files(kent_tree *t) { return &t->files; }
+
+size_t kent_tree_file_count(const kent_tree *t) { return t->files.count; }
+
+const char *kent_tree_file(const kent_tree *t, size_t index)
+{
+    return t->files.names[index];
+}
+
+unsigned long long kent_tree_checksum(const kent_tree *t) { return t->files.checksum; }
+
+kent_place kent_tree_place(const kent_tree *t, const kent_twig *twig)
+{
+    (void)t;
+    return twig->place;
+}
+
+kent_twig_type kent_twig_type_of(const kent_twig *twig) { return twig->type; }
+
 const char *kent_twig_type_word(const kent_twig *twig)
 {
-    switch (kent_twig_type_of(twig)) {
+    switch (twig->type) {
     case KENT_TWIG_GROUP:
         return "a group { }";
     case KENT_TWIG_LIST:
@@ -200,54 +284,37 @@ const char *kent_twig_type_word(const kent_twig *twig)
     return "";
 }
 
-const char *kent_twig_name(const kent_twig *twig)
-{
-    const char *name = config_setting_name(setting_of(twig));
-    return name ? name : "";
-}
+const char *kent_twig_name(const kent_twig *twig) { return twig->name; }
 
-size_t kent_twig_count(const kent_twig *twig)
-{
-    const kent_twig_type type = kent_twig_type_of(twig);
-    if (type != KENT_TWIG_GROUP && type != KENT_TWIG_LIST) return 0;
-    return (size_t)config_setting_length(setting_of(twig));
-}
+size_t kent_twig_count(const kent_twig *twig) { return twig->count; }
 
 const kent_twig *kent_twig_child(const kent_twig *twig, size_t index)
 {
-    return twig_of(config_setting_get_elem(setting_of(twig), (unsigned)index));
+    return &twig->children[index];
 }
 
 const kent_twig *kent_twig_member(const kent_twig *twig, const char *name)
 {
-    if (kent_twig_type_of(twig) != KENT_TWIG_GROUP) return NULL;
-    return twig_of(config_setting_get_member(setting_of(twig), name));
+    if (twig->type != KENT_TWIG_GROUP) return NULL;
+    for (size_t i = 0; i < twig->count; i++) {
+        if (strcmp(twig->children[i].name, name) == 0) return &twig->children[i];
+    }
+    return NULL;
 }
 
 const char *kent_twig_text(const kent_twig *twig)
 {
-    return kent_twig_type_of(twig) == KENT_TWIG_TEXT
-               ? config_setting_get_string(setting_of(twig))
-               : NULL;
+    return twig->type == KENT_TWIG_TEXT ? twig->text : NULL;
 }
 
 double kent_twig_number(const kent_twig *twig)
 {
-    const config_setting_t *s = setting_of(twig);
-    switch (config_setting_type(s)) {
-    case CONFIG_TYPE_INT:
-        return (double)config_setting_get_int(s);
-    case CONFIG_TYPE_INT64:
-        return (double)config_setting_get_int64(s);
-    case CONFIG_TYPE_FLOAT:
-        return config_setting_get_float(s);
-    default:
-        return NAN;
-    }
+    return twig->type == KENT_TWIG_WHOLE || twig->type == KENT_TWIG_NUMBER
+               ? twig->number
+               : NAN;
 }
 
 bool kent_twig_is_true(const kent_twig *twig)
 {
-    return kent_twig_type_of(twig) == KENT_TWIG_SWITCH &&
-           config_setting_get_bool(setting_of(twig)) == CONFIG_TRUE;
+    return twig->type == KENT_TWIG_SWITCH && twig->number != 0.0;
 }

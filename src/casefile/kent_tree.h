@@ -1,12 +1,9 @@
-/* A case's text as a tree of settings, each with its file and line. The only place that
- * knows libconfig. A twig lives as long as its tree. */
+/* A case's text as a tree of settings, each with its file and line. Made by libconfig,
+ * which is known here alone; a table makes twigs of its rows. */
 #ifndef KENT_TREE_H
 #define KENT_TREE_H
 
-#include "kent_model.h"
-
-typedef struct kent_tree kent_tree;
-typedef struct kent_twig kent_twig; /* one setting */
+#include "kent_files.h"
 
 typedef enum kent_twig_type {
     KENT_TWIG_GROUP, /* { } */
@@ -17,6 +14,21 @@ typedef enum kent_twig_type {
     KENT_TWIG_SWITCH
 } kent_twig_type;
 
+/* One setting. Read it through the functions below; whoever makes one fills what its
+ * type has. */
+typedef struct kent_twig {
+    kent_twig_type type;
+    kent_place place;
+    const char *name;                 /* "" in a list */
+    const char *text;                 /* of a text */
+    double number;                    /* of a number; of a switch: 1 true, 0 false */
+    const struct kent_twig *children; /* [count] of a group or a list */
+    size_t count;
+} kent_twig;
+
+/* Its twigs and their texts live as long as it does. */
+typedef struct kent_tree kent_tree;
+
 /* Scans and parses path ("-": standard input). Fails with KENT_E_INPUT (complaints were
  * added), KENT_E_IO or KENT_E_NOMEM (err). *out is the caller's. */
 kent_status kent_tree_read(const char *path, kent_tree **out,
@@ -24,6 +36,7 @@ kent_status kent_tree_read(const char *path, kent_tree **out,
 void kent_tree_free(kent_tree *t);
 
 const kent_twig *kent_tree_root(const kent_tree *t);
+kent_files *kent_tree_files(kent_tree *t); /* a table adds to them */
 size_t kent_tree_file_count(const kent_tree *t);
 const char *kent_tree_file(const kent_tree *t, size_t index);
 unsigned long long kent_tree_checksum(const kent_tree *t);
