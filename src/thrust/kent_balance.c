@@ -57,14 +57,29 @@ double kent_port_momentum_factor(const kent_model *m, const kent_port *port,
     return kent_momentum_factor(reynolds, factor);
 }
 
+/* A head or pressure of its own, which a dead branch and an open end have not. */
+static bool port_leads(const kent_port *port)
+{
+    return port->kind == KENT_PORT_SPAN || port->kind == KENT_PORT_GIVEN;
+}
+
 size_t kent_port_widest(const kent_port *ports, size_t count)
 {
     size_t widest = 0;
 
     for (size_t i = 1; i < count; i++) {
-        if (ports[i].inside_diameter > ports[widest].inside_diameter) widest = i;
+        if (!port_leads(&ports[i])) continue;
+        if (!port_leads(&ports[widest]) ||
+            ports[i].inside_diameter > ports[widest].inside_diameter) {
+            widest = i;
+        }
     }
     return widest;
+}
+
+double kent_port_level(const kent_fitting *f, const kent_port *port)
+{
+    return isnan(port->level) ? f->at.z : port->level;
 }
 
 double kent_balance_flow_gap(const kent_port *ports, size_t count)

@@ -41,8 +41,13 @@ void kent_balance_sum(const kent_port *ports, size_t count, double density,
 double kent_port_momentum_factor(const kent_model *m, const kent_port *port,
                                  double flow);
 
-/* The port whose velocity the piezometric head belongs to: the first of the widest. */
+/* The port whose velocity the piezometric head belongs to: the first of the widest with
+ * a pipe, or with a pressure stated. */
 size_t kent_port_widest(const kent_port *ports, size_t count);
+
+/* m: where the pressure of a port is told: its own level in a group, else that of the
+ * fitting's centre. */
+double kent_port_level(const kent_fitting *f, const kent_port *port);
 
 /* Worst imbalance of flow over the largest flow of a ports-only fitting, 0 .. 1. */
 double kent_balance_flow_gap(const kent_port *ports, size_t count);

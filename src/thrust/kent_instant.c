@@ -17,6 +17,35 @@ static kent_balance balance_with_weight(const kent_fitting *f)
     return b;
 }
 
+void kent_frame_complete(const kent_model *m, const kent_fitting *f, kent_frame *frame)
+{
+    const kent_port *ports = &m->ports[f->port_first];
+    const size_t widest = kent_port_widest(ports, f->port_count);
+    size_t outlet = f->port_count; /* none */
+    double drawn = 0.0, rate = 0.0;
+
+    for (size_t i = 0; i < f->port_count; i++) {
+        if (ports[i].kind == KENT_PORT_SPAN) {
+            drawn -= frame->flow[i];
+            rate -= frame->flow_rate[i];
+            continue;
+        }
+        frame->head[i] = frame->head[widest];
+        frame->flow[i] = frame->flow_rate[i] = 0.0;
+        if (ports[i].kind == KENT_PORT_OUTLET) outlet = i;
+    }
+    if (outlet == f->port_count) return;
+    frame->flow[outlet] = drawn;
+    frame->flow_rate[outlet] = rate;
+}
+
+/* Pa that still water gains from the fitting's centre down to a port. */
+static double pressure_below_centre(const kent_model *m, const kent_fitting *f,
+                                    const kent_port *port)
+{
+    return m->water.density * m->gravity * (f->at.z - kent_port_level(f, port));
+}
+
 kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
                                    const kent_frame *frame)
 {
@@ -33,16 +62,19 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
     }
     for (size_t i = 0; i < f->port_count; i++) {
         kent_port_state *s = &out.balance.port[i];
-        s->pressure = kent_model_pressure(m, frame->head[i], f->at.z);
+        s->pressure =
+            kent_model_pressure(m, frame->head[i], kent_port_level(f, &ports[i]));
         if (f->type != KENT_VALVE) {
             s->pressure +=
                 0.5 * rho * (speed[widest] * speed[widest] - speed[i] * speed[i]);
         }
+        if (ports[i].kind == KENT_PORT_OUTLET) s->pressure = 0.0;
         s->flow = frame->flow[i];
         s->flow_rate = ports[i].face > 0.0 ? frame->flow_rate[i] : 0.0;
         s->momentum_factor = kent_port_momentum_factor(m, &ports[i], frame->flow[i]);
     }
-    out.pressure = out.balance.port[widest].pressure;
+    out.pressure = out.balance.port[widest].pressure -
+                   pressure_below_centre(m, f, &ports[widest]);
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
         out.pressure = fmax(out.pressure, out.balance.port[i].pressure);
     }
@@ -61,7 +93,9 @@ kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
 
     for (size_t i = 0; i < f->port_count; i++) {
         kent_port_state *s = &out.balance.port[i];
-        s->pressure = only < 0 || (size_t)only == i ? pressure : 0.0;
+        if (ports[i].kind != KENT_PORT_OUTLET && (only < 0 || (size_t)only == i)) {
+            s->pressure = pressure + pressure_below_centre(m, f, &ports[i]);
+        }
         s->momentum_factor = kent_port_momentum_factor(m, &ports[i], 0.0);
     }
     kent_balance_sum(ports, f->port_count, m->water.density, &out.balance);

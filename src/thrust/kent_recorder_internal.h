@@ -71,13 +71,17 @@ double kent_seen_above_90_percent(const kent_seen *seen, double step);
 /* Whether the fitting stands in the network, not on given ports. */
 bool kent_fitting_in_network(const kent_fitting *f);
 
+/* Heads and flows of the ports without pipes, from those with: a dead branch has the
+ * reference port's head and no flow, an open end passes on what the others bring. */
+void kent_frame_complete(const kent_model *m, const kent_fitting *f, kent_frame *frame);
+
 /* The balance of an instant in the network: pressures from heads by 8.3 and 9.3. Each
  * side of a valve keeps the pressure of its own head. */
 kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
                                    const kent_frame *frame);
 
-/* The balance at rest under one pressure (Pa) at every port, or at port `only` alone.
- */
+/* The balance at rest under one pressure (Pa, at the centre) at every port but an open
+ * end, or at port `only` alone. */
 kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
                                   double pressure, int only);
 
