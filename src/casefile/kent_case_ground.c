@@ -31,7 +31,7 @@ void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
         kent_record_copy(record, "source", NULL, s->source, sizeof s->source);
     }
     kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
-    kent_record_soil(record, s);
+    kent_record_soil(&f->reader, record, s);
     s->place = record->place;
     if (!record->sound) return;
     if (isnan(s->allowable_bearing)) {

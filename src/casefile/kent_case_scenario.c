@@ -8,11 +8,10 @@ enum { LAW_MOST = 1000 }; /* points of one opening law */
 static void fill_law(kent_filling *f, kent_record *record, kent_event *e)
 {
     kent_model *m = f->model;
-    const kent_kind kind = KENT_TIME;
     double time[LAW_MOST];
     double value[LAW_MOST];
-    const size_t count = kent_record_pairs(&f->reader, record, "opening_law", &kind,
-                                           LAW_MOST, time, value);
+    const size_t count = kent_record_pairs(&f->reader, record, "opening_law", KENT_TIME,
+                                           KENT_RATIO, LAW_MOST, time, value);
     if (kent_grow((void **)&m->law, &f->law_capacity, m->law_count + count,
                   sizeof *m->law) != 0) {
         f->reader.failed = true;

@@ -336,7 +336,7 @@ const kent_key KENT_KEYS[] = {
     REF("soil", "from", "soil_row", "none",
         "row of the catalogue of soils whose values hold where none is given here"),
     TEXT("soil", "source", 199, "given in the case", "report the values come from"),
-    SOIL_VALUES("soil", "required unless from"),
+    SOIL_VALUES("soil", "one of the four bearings, or from"),
 
     REF("ground", "soil", "soil", "none", "soil around the main"),
     QUANTITY("ground", "cover", KENT_LENGTH, WITHIN(0.0, 100.0), "none",
@@ -588,6 +588,10 @@ const kent_key KENT_KEYS[] = {
              "equivalent sand roughness of the usual inside"),
     QUANTITY("material", "lining_modulus", KENT_MODULUS, WITHIN(0.0, 1e12), "0 GPa",
              "modulus of the usual lining"),
+    SWITCH("material", "plastic", "false", "creeps, and is weaker when warm"),
+    LIST("material", "creep", "", "none", "pairs (retardation time, compliance)"),
+    LIST("material", "derating", "", "none",
+         "pairs (temperature, share of the ratings that is left), of a plastic"),
     PROVENANCE("material"),
 
     ID("valve_type", "id", "required", "its name"),
@@ -596,7 +600,7 @@ const kent_key KENT_KEYS[] = {
     PROVENANCE("valve_type"),
 
     ID("soil_row", "id", "required", "its name, with its USCS symbol"),
-    SOIL_VALUES("soil_row", "required"),
+    SOIL_VALUES("soil_row", "one of the four bearings"),
     PROVENANCE("soil_row"),
 
     ID("rule", "id", "required", "name of the set"),

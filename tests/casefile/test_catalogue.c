@@ -2,7 +2,6 @@
 #include "case_text.h"
 
 #include <math.h>
-#include <sys/stat.h>
 
 static const double MM = 0.001;  /* m */
 static const double IN = 0.0254; /* m */
@@ -310,56 +309,6 @@ static void every_row_says_where_it_comes_from(void **state)
     kent_catalogue_free(c);
 }
 
-/* A copy of config/ with one line of soils.cfg spoiled. */
-static void a_fault_in_the_catalogue_is_told_with_its_file_and_line(void **state)
-{
-    (void)state;
-    char folder[] = "/tmp/kent-config-XXXXXX";
-    char command[300];
-    char path[64];
-    assert_non_null(mkdtemp(folder));
-    (void)snprintf(command, sizeof command, "cp %s/config/*.cfg %s", KENT_SOURCE_DIR,
-                   folder);
-    assert_int_equal(system(command), 0); /* NOLINT: both paths are ours */
-    (void)snprintf(path, sizeof path, "%s/soils.cfg", folder);
-    FILE *file = fopen(path, "w");
-    assert_non_null(file);
-    (void)fputs("format = 1;\nsoils = ( { id = \"a\"; allowable_bearing = \"2 m\";\n"
-                "  source = \"x\"; status = \"guess\"; } );\n",
-                file);
-    assert_int_equal(fclose(file), 0);
-
-    kent_complaints c = {0};
-    kent_error err = {0};
-    kent_catalogue *catalogue = NULL;
-    assert_int_equal(kent_catalogue_read(folder, &catalogue, &c, &err), KENT_E_INPUT);
-    assert_null(catalogue);
-    assert_int_equal(c.count, 2);
-    assert_string_equal(c.kept[0].file, path);
-    assert_int_equal(c.kept[0].line, 2);
-    assert_non_null(strstr(c.kept[0].what, "a length where a stress belongs"));
-    assert_int_equal(c.kept[1].line, 3);
-    assert_non_null(strstr(c.kept[1].what, "status = \"guess\" is not known"));
-    (void)snprintf(command, sizeof command, "rm -r %s", folder);
-    assert_int_equal(system(command), 0); /* NOLINT: our own folder */
-}
-
-static void the_environment_says_where_the_catalogue_is(void **state)
-{
-    (void)state;
-    kent_complaints c = {0};
-    kent_error err = {0};
-    kent_catalogue *catalogue = NULL;
-    assert_int_equal(setenv("KENTLEDGE_CONFIG", "/nowhere", 1), 0);
-    assert_int_equal(kent_catalogue_read(NULL, &catalogue, &c, &err), KENT_E_IO);
-    assert_non_null(strstr(err.where, "/nowhere/"));
-    assert_int_equal(setenv("KENTLEDGE_CONFIG", KENT_SOURCE_DIR "/config", 1), 0);
-    err = (kent_error){0};
-    assert_int_equal(kent_catalogue_read(NULL, &catalogue, &c, &err), KENT_OK);
-    kent_catalogue_free(catalogue);
-    assert_int_equal(unsetenv("KENTLEDGE_CONFIG"), 0);
-}
-
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -377,8 +326,6 @@ int main(void)
         cmocka_unit_test(valves_pass_less_the_less_they_are_open),
         cmocka_unit_test(a_butterfly_valves_capacity_follows_from_its_loss),
         cmocka_unit_test(every_row_says_where_it_comes_from),
-        cmocka_unit_test(a_fault_in_the_catalogue_is_told_with_its_file_and_line),
-        cmocka_unit_test(the_environment_says_where_the_catalogue_is),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
