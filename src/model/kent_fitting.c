@@ -289,16 +289,41 @@ static double first_given(double a, double b, double c)
     return !isnan(a) ? a : !isnan(b) ? b : c;
 }
 
+/* The zone that a point lies in, on the pipe whose stations it has before others; -1.
+ */
+static int zone_of(const kent_model *m, const kent_layout *l, int point)
+{
+    const size_t owner = l->owner[point];
+    int zone = kent_zone_at(m, l->pipe[owner], m->station[owner]);
+    for (size_t i = l->first[point]; zone < 0 && i < l->first[point + 1]; i++) {
+        const size_t stop = l->stop[i];
+        const bool start = stop == m->pipes[l->pipe[stop]].route_first;
+        zone = kent_zone_at(m, l->pipe[stop],
+                            start ? m->station_on[stop] : m->station[stop]);
+    }
+    return zone;
+}
+
+/* note, point, zone, ground: the first that says something. */
 static void describe_ground(const kent_model *m, const kent_fitting_note *note,
                             kent_fitting *f)
 {
-    const kent_point *point = f->point >= 0 ? &m->points[f->point] : NULL;
     const double nan = (double)NAN;
-    f->cover = first_given(note ? note->cover : nan, point ? point->cover : nan,
-                           m->ground.cover);
-    f->water_table =
-        first_given(nan, point ? point->water_table : nan, m->ground.water_table);
+    const kent_point *point = f->point >= 0 ? &m->points[f->point] : NULL;
+    const kent_ground_zone *zone = f->zone >= 0 ? &m->ground_zones[f->zone] : NULL;
+    const double outside =
+        isfinite(f->outside_diameter) ? f->outside_diameter : f->size;
+    const double of_point = point ? kent_point_cover(point, outside) : nan;
+    const double of_zone = zone ? zone->cover : nan;
+
+    f->cover = first_given(note ? note->cover : nan, of_point,
+                           first_given(of_zone, m->ground.cover, nan));
+    f->water_table = first_given(point ? point->water_table : nan,
+                                 zone ? zone->water_table : nan, m->ground.water_table);
     f->soil = m->ground.soil;
+    f->trench = m->ground.trench;
+    if (zone && zone->soil >= 0) f->soil = zone->soil;
+    if (zone && zone->trench >= 0) f->trench = zone->trench;
     if (point && point->soil >= 0) f->soil = point->soil;
     if (note && note->soil >= 0) f->soil = note->soil;
     f->weight = note && isfinite(note->weight) ? note->weight : 0.0;
@@ -340,8 +365,7 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                           .valve = type == KENT_VALVE ? site.device.index : -1,
                           .curve_radius = (double)NAN,
                           .curve_length = (double)NAN,
-                          .zone = -1,
-                          .trench = m->ground.trench,
+                          .zone = zone_of(m, l, point),
                           .port_count = site.count,
                           .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
@@ -437,7 +461,6 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
                           .curve_radius = nan,
                           .curve_length = nan,
                           .zone = -1,
-                          .trench = m->ground.trench,
                           .port_count = note->port_count,
                           .place = note->place};
     (void)snprintf(out->id, sizeof out->id, "%s", note->id);

@@ -14,6 +14,24 @@ static bool is_last_stop(const kent_model *m, const kent_layout *l, size_t stop)
     return stop + 1 == pipe->route_first + pipe->route_count;
 }
 
+bool kent_layout_runs_through(const kent_model *m, const kent_layout *l, size_t stop)
+{
+    return !is_first_stop(m, l, stop) && !is_last_stop(m, l, stop);
+}
+
+static void find_owners(const kent_model *m, kent_layout *l)
+{
+    for (size_t p = 0; p < m->point_count; p++) {
+        const size_t end = l->first[p + 1];
+        size_t i = l->first[p];
+        while (i < end && !kent_layout_runs_through(m, l, l->stop[i])) {
+            i++;
+        }
+        if (i == end) i = l->first[p];
+        if (i < end) l->owner[p] = l->stop[i];
+    }
+}
+
 /* Stops sorted by point, by counting: those of one point stay in the order of pipes. */
 static void group_stops(const kent_model *m, kent_layout *l)
 {
@@ -44,11 +62,12 @@ kent_status kent_layout_make(const kent_model *m, kent_layout *l)
     l->first = kent_alloc(m->point_count + 1, sizeof *l->first);
     l->stop = kent_alloc(m->route_count, sizeof *l->stop);
     l->pipe = kent_alloc(m->route_count, sizeof *l->pipe);
+    l->owner = kent_alloc(m->point_count, sizeof *l->owner);
     l->device = kent_alloc(m->point_count, sizeof *l->device);
     l->station = kent_alloc(m->point_count, sizeof *l->station);
     l->arm_node = kent_alloc(m->route_count, 2 * sizeof *l->arm_node);
     l->arm_span = kent_alloc(m->route_count, 2 * sizeof *l->arm_span);
-    if (!l->first || !l->stop || !l->pipe || !l->device || !l->station ||
+    if (!l->first || !l->stop || !l->pipe || !l->owner || !l->device || !l->station ||
         !l->arm_node || !l->arm_span) {
         return KENT_E_NOMEM; /* the caller clears */
     }
@@ -56,6 +75,7 @@ kent_status kent_layout_make(const kent_model *m, kent_layout *l)
         l->arm_node[a] = l->arm_span[a] = -1;
     }
     group_stops(m, l);
+    find_owners(m, l);
     return KENT_OK;
 }
 
@@ -64,6 +84,7 @@ void kent_layout_clear(kent_layout *l)
     free(l->first);
     free(l->stop);
     free(l->pipe);
+    free(l->owner);
     free(l->device);
     free(l->station);
     free(l->arm_node);

@@ -48,6 +48,10 @@ kent_model *kent_model_new(void)
 static void clear_derived(kent_model *m)
 {
     free(m->chainage);
+    free(m->station);
+    free(m->station_on);
+    free(m->zone_first);
+    free(m->zone_order);
     free(m->spans);
     free(m->nodes);
     free(m->ends);
@@ -55,7 +59,9 @@ static void clear_derived(kent_model *m)
     free(m->fittings);
     free(m->members);
     free(m->marches);
-    m->chainage = NULL;
+    m->chainage = m->station = m->station_on = NULL;
+    m->zone_first = NULL;
+    m->zone_order = NULL;
     m->spans = NULL;
     m->nodes = NULL;
     m->ends = NULL;
@@ -137,7 +143,10 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     kent_layout_place_devices(m, &layout, complaints);
     if (complaints->count > before) goto done; /* nothing beyond would make sense */
-    kent_route_stations(m, &layout);
+    status = kent_route_stations(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
+    status = kent_ground_settle(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
     caution_unused_points(m, &layout);
     status = kent_network_cut(m, &layout, complaints);
     if (status != KENT_OK) goto done;

@@ -549,6 +549,11 @@ typedef struct kent_model {
     /* derived */
     double
         *chainage; /* [route_count] m from the pipe's start, by its hydraulic length */
+    double *station;    /* [route_count] m, as counted along the pipe up to the point */
+    double *station_on; /* [route_count] m, what counting goes on from there */
+    size_t *zone_first; /* [pipe_count + 1] into zone_order */
+    int *zone_order;    /* [ground_zone_count] zones grouped by pipe, by where they
+                           start */
     kent_span *spans;
     size_t span_count;
     kent_node *nodes;
@@ -598,6 +603,23 @@ double kent_span_level(const kent_model *m, const kent_span *span, double chaina
  * and its derivative with respect to flow. The surge's reaches add up to the same. */
 double kent_span_loss(const kent_model *m, const kent_span *span, double flow,
                       double *derivative);
+
+/* The ground around a pipe at one place along it. */
+typedef struct kent_ground_here {
+    int soil;                  /* -1: not stated */
+    int trench;                /* -1: not stated */
+    int zone;                  /* of kent_model.ground_zones; -1: in none */
+    double cover, water_table; /* m; NAN: not stated; INFINITY: no water */
+} kent_ground_here;
+
+/* chainage m from the pipe's start, 0 .. its length. What the zone there leaves out, or
+ * where there is none, the ground's defaults say; cover first of all lies in a straight
+ * line between neighbouring points that both have one. What single points say of soil
+ * and water is theirs alone. */
+kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chainage);
+
+/* m: station at a chainage of a pipe, counted from the last point before it. */
+double kent_model_station_at(const kent_model *m, int pipe, double chainage);
 
 /* Pa gauge, from a piezometric head (m) at a level (m). */
 double kent_model_pressure(const kent_model *m, double head, double level);

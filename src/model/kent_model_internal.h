@@ -33,6 +33,9 @@ typedef struct kent_layout {
     size_t *first;       /* [point_count + 1] into stop */
     size_t *stop;        /* [route_count] stops grouped by point, rising */
     int *pipe;           /* [route_count] of each stop */
+    size_t *owner;       /* [point_count] the stop whose stations a point's are: the
+                            first that a route runs through, else the first; any number
+                            where there is none */
     kent_device *device; /* [point_count] */
     double *station;     /* [point_count] m; NAN: on no route */
     int *arm_node;       /* [2 route_count] -1: the pipe isn't cut there */
@@ -46,6 +49,8 @@ void kent_layout_clear(kent_layout *l);
  * as flow along the routes would: the arriving one first, where just one arrives. */
 size_t kent_layout_arms(const kent_model *m, const kent_layout *l, int point,
                         kent_arm arms[KENT_ARMS]);
+/* It is neither end of its route. */
+bool kent_layout_runs_through(const kent_model *m, const kent_layout *l, size_t stop);
 bool kent_layout_is_cut(const kent_model *m, const kent_layout *l, size_t stop);
 /* Notes which device stands at each point; complains where one cannot. */
 void kent_layout_place_devices(const kent_model *m, kent_layout *l,
@@ -57,9 +62,19 @@ static inline size_t kent_arm_number(kent_arm arm)
     return 2 * arm.stop + (arm.leaves ? 1U : 0U);
 }
 
-/* kent_route.c: both need every stop's pipe; the second needs the first. */
+/* kent_route.c: the second needs the first and the layout. */
 kent_status kent_route_measure(kent_model *m, kent_complaints *complaints);
-void kent_route_stations(const kent_model *m, const kent_layout *l);
+kent_status kent_route_stations(kent_model *m, const kent_layout *l,
+                                kent_complaints *complaints);
+
+/* kent_ground.c: zones sorted, and held against their pipes; levels of the ground
+ * against those of the pipes. Needs stations. */
+kent_status kent_ground_settle(kent_model *m, const kent_layout *l,
+                               kent_complaints *complaints);
+/* m: ground to crown of a pipe of that outside diameter; NAN: the point has none. */
+double kent_point_cover(const kent_point *point, double outside_diameter);
+/* The zone of a pipe at a station; -1. */
+int kent_zone_at(const kent_model *m, int pipe, double station);
 
 /* kent_network.c: spans, nodes, ends; then what no fixed level reaches. */
 kent_status kent_network_cut(kent_model *m, kent_layout *l,

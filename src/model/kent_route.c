@@ -1,5 +1,7 @@
 #include "kent_model_internal.h"
 
+#include "kent_said.h"
+
 #include <math.h>
 
 /* A given length further from the coordinates than this is worth saying: 1 %. */
@@ -132,52 +134,99 @@ kent_status kent_route_measure(kent_model *m, kent_complaints *complaints)
     return KENT_OK;
 }
 
-/* m: where a pipe starts. A station given at its first point, or further on, anchors
- * it; else it goes on from the pipe before it that ends there. */
-static double start_station(const kent_model *m, const kent_layout *l,
-                            const kent_pipe *pipe)
+static const kent_point *point_of(const kent_model *m, size_t stop)
+{
+    return &m->points[m->route[stop]];
+}
+
+/* Whether a pipe goes on from one listed before it that ends at its first point; -1
+ * where it is a branch there, which has stations of its own. */
+static int follows(const kent_model *m, const kent_layout *l, const kent_pipe *pipe)
 {
     const int start = m->route[pipe->route_first];
-    bool ended = false, continued = false; /* by pipes listed before this one */
+    bool ended = false;
+    if (kent_layout_runs_through(m, l, l->owner[start])) return -1;
     for (size_t i = l->first[start]; i < l->first[start + 1]; i++) {
         const size_t stop = l->stop[i];
         if (stop >= pipe->route_first) break;
         const kent_pipe *before = &m->pipes[l->pipe[stop]];
-        if (stop + 1 == before->route_first + before->route_count) {
-            ended = true;
-        } else {
-            continued = true;
-        }
+        if (stop + 1 != before->route_first + before->route_count) return -1;
+        ended = true;
     }
-    if (!continued) { /* else a branch, which has stations of its own */
-        if (!isnan(m->points[start].station)) return m->points[start].station;
-        if (ended) return l->station[start];
-    }
+    return ended ? 1 : 0;
+}
+
+/* m: where a pipe starts. It goes on from the pipe before it that ends there; else a
+ * station given at its first point, or further on, anchors it. */
+static double start_station(const kent_model *m, const kent_layout *l,
+                            const kent_pipe *pipe)
+{
+    const kent_point *start = point_of(m, pipe->route_first);
+    const int how = follows(m, l, pipe);
+    if (how > 0 && !isnan(start->station_ahead)) return start->station_ahead;
+    if (how >= 0 && !isnan(start->station)) return start->station;
+    if (how > 0) return l->station[m->route[pipe->route_first]];
     for (size_t k = 1; k < pipe->route_count; k++) {
         const size_t stop = pipe->route_first + k;
-        const double given = m->points[m->route[stop]].station;
+        if (l->owner[m->route[stop]] != stop) continue;
+        const double given = point_of(m, stop)->station;
         if (!isnan(given)) return given - m->chainage[stop];
     }
     return 0.0;
 }
 
-void kent_route_stations(const kent_model *m, const kent_layout *l)
+static void complain_falling(const kent_model *m, const kent_pipe *pipe, size_t stop,
+                             double before, double here, kent_complaints *complaints)
 {
+    const kent_point *point = point_of(m, stop);
+    kent_place_complain(m, point->place, complaints,
+                        "point \"%s\": its station is %s, that of \"%s\" before it on "
+                        "pipe \"%s\" %s; stations rise along a route: correct them, "
+                        "turn the route round, or give station_ahead where counting "
+                        "starts anew",
+                        point->id, kent_said_of(KENT_LENGTH, m->units, here).s,
+                        point_of(m, stop - 1)->id, pipe->id,
+                        kent_said_of(KENT_LENGTH, m->units, before).s);
+}
+
+/* Stations along one pipe; a given one counts on the pipe whose it is. */
+static void count_stations(const kent_model *m, const kent_layout *l,
+                           const kent_pipe *pipe, kent_complaints *complaints)
+{
+    double here = start_station(m, l, pipe);
+    for (size_t k = 0; k < pipe->route_count; k++) {
+        const size_t stop = pipe->route_first + k;
+        const int point = m->route[stop];
+        const bool own = l->owner[point] == stop;
+        if (k > 0) {
+            const double before = m->station_on[stop - 1];
+            here = before + m->chainage[stop] - m->chainage[stop - 1];
+            const double given = m->points[point].station;
+            if (own && !isnan(given)) here = given;
+            const bool drop =
+                m->points[point].at.z != m->points[m->route[stop - 1]].at.z;
+            if (here < before || (here == before && !drop)) {
+                complain_falling(m, pipe, stop, before, here, complaints);
+            }
+        }
+        m->station[stop] = m->station_on[stop] = here;
+        const double ahead = m->points[point].station_ahead;
+        if (own && !isnan(ahead)) m->station_on[stop] = ahead;
+        if (own) l->station[point] = here;
+    }
+}
+
+kent_status kent_route_stations(kent_model *m, const kent_layout *l,
+                                kent_complaints *complaints)
+{
+    m->station = kent_alloc(m->route_count, sizeof *m->station);
+    m->station_on = kent_alloc(m->route_count, sizeof *m->station_on);
+    if (!m->station || !m->station_on) return KENT_E_NOMEM;
     for (size_t p = 0; p < m->point_count; p++) {
         l->station[p] = (double)NAN;
     }
     for (size_t i = 0; i < m->pipe_count; i++) {
-        const kent_pipe *pipe = &m->pipes[i];
-        double here = start_station(m, l, pipe);
-        for (size_t k = 0; k < pipe->route_count; k++) {
-            const size_t stop = pipe->route_first + k;
-            const int point = m->route[stop];
-            if (k > 0) {
-                here += m->chainage[stop] - m->chainage[stop - 1];
-                const double given = m->points[point].station;
-                if (!isnan(given)) here = given;
-            }
-            if (isnan(l->station[point])) l->station[point] = here;
-        }
+        count_stations(m, l, &m->pipes[i], complaints);
     }
+    return KENT_OK;
 }
