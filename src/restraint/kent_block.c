@@ -41,6 +41,15 @@ double kent_site_axis(const kent_site *site)
     return site->cover + 0.5 * site->diameter;
 }
 
+kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules)
+{
+    return (kent_bearing_place){
+        .depth = kent_site_axis(site),
+        .water_table = site->water_table,
+        .water = rules->water_unit_weight,
+    };
+}
+
 /* source docs/theory/10-blocks.md, 10.12. A depth that is not known (NAN) counts as
  * under water where there is any. */
 double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth)

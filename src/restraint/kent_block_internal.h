@@ -36,6 +36,9 @@ kent_block kent_block_none(void); /* nothing: NAN, and no concrete */
 
 double kent_site_axis(const kent_site *site); /* m below ground */
 
+/* Where a face centred on the pipe stands. */
+kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules);
+
 /* N/m3 of concrete whose base lies at depth (m): buoyed where any of it is under water.
  */
 double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth);

@@ -4,10 +4,6 @@
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
 static const double KNOCK = 0.1;
 
-/* A presumptive bearing that asks for a larger passive coefficient than this is
- * unlikely: it takes a friction angle above 42 degrees. */
-static const double STEEPEST_PASSIVE = 5.0;
-
 /* N: beyond it the concrete itself wants designing. CIRIA Report 128 (1994) covers
  * blocks to about this thrust without. */
 static const double LARGE = 1000e3;
@@ -59,31 +55,34 @@ static void caution_peak(const kent_holding_work *w, kent_holding *h)
         c->above_90_percent);
 }
 
-/* Whether the ground can be as strong as its presumptive value says, at this depth. */
+/* Whether the ground can be as strong as its bearing says, at this depth. */
 static void caution_bearing(const kent_holding_work *w, kent_holding *h)
 {
     const kent_soil *s = w->soil;
     const kent_system units = w->m->units;
+    const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
+    kent_bearing_claim claim;
+    kent_text t = {0};
 
-    if (!s || isnan(s->unit_weight) || isnan(w->site.cover)) return;
-    const double axis = kent_site_axis(&w->site);
-    const double water = fmax(0.0, axis - w->site.water_table);
-    const double stress = s->unit_weight * axis - water * w->m->rules.water_unit_weight;
-    const double claimed = s->allowable_bearing * s->factor_inside;
-    if (!(claimed > STEEPEST_PASSIVE * stress)) return;
+    if (!s || !kent_bearing_claims(s, &at, &claim)) return;
+    if (!(claim.passive > KENT_PASSIVE_UNLIKELY)) return;
+    kent_text_add(
+        &t, "soil '%s': %s at this depth asks for a passive coefficient of %.1f", s->id,
+        kent_said_of(KENT_STRESS, units, claim.bearing).s, claim.passive);
     if (isnan(s->friction_angle)) {
-        kent_notes_add(&h->cautions,
-                       "soil '%s': %s at this depth asks for a passive coefficient of "
-                       "%.1f, which is unlikely",
-                       s->id, kent_said_of(KENT_STRESS, units, claimed).s,
-                       claimed / stress);
+        kent_text_add(&t, ", which is unlikely (40 degrees give %.1f)",
+                      KENT_PASSIVE_UNLIKELY);
     } else {
-        kent_notes_add(&h->cautions,
-                       "soil '%s': %s at this depth asks for a passive coefficient of "
-                       "%.1f; its friction angle gives %.1f",
-                       s->id, kent_said_of(KENT_STRESS, units, claimed).s,
-                       claimed / stress, kent_rankine_passive(s->friction_angle));
+        kent_text_add(&t, "; its friction angle gives %.1f",
+                      kent_rankine_passive(s->friction_angle));
     }
+    if (claim.weight_assumed) {
+        kent_text_add(&t, "; its unit weight is not given, %s is assumed",
+                      kent_said_of(KENT_UNIT_WEIGHT, units, claim.unit_weight).s);
+    }
+    kent_notes_add(&h->cautions, "%s", kent_text_of(&t));
+    h->cautions.failed = h->cautions.failed || t.failed;
+    kent_text_clear(&t);
 }
 
 /* N: how much of an instant's sideways thrust goes against this one. */

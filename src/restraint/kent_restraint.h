@@ -6,6 +6,7 @@
 #ifndef KENT_RESTRAINT_H
 #define KENT_RESTRAINT_H
 
+#include "kent_bearing.h"
 #include "kent_derivation.h"
 #include "kent_loads.h"
 

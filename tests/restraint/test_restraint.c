@@ -264,15 +264,30 @@ static void bearing_that_the_depth_cannot_give_is_doubted(void **state)
     assert_false(kent_hand_says(holding_of(&b, r, "C"), "passive coefficient"));
     finish(&b, r);
 
-    for (int over = 0; over < 2; over++) { /* five times is the limit */
+    for (int over = 0; over < 2; over++) { /* 4.6 times is the limit */
         b = main_of_five();
-        b.model->soils[0].allowable_bearing = (over ? 5.01 : 4.99) * 19e3 * 1.81;
+        b.model->soils[0].allowable_bearing = (over ? 4.61 : 4.59) * 19e3 * 1.81;
         kent_build_derive(&b);
         r = kent_hand_size(&b, TEST, 1);
         assert_true(kent_hand_says(holding_of(&b, r, "C"), "passive coefficient") ==
                     (over > 0));
         finish(&b, r);
     }
+}
+
+static void a_bearing_is_doubted_without_a_unit_weight_too(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    b.model->soils[0].allowable_bearing = 170e3; /* on 18.85 kN/m3 x 1.81 m: 4.98 */
+    b.model->soils[0].unit_weight = (double)NAN;
+    b.model->soils[0].friction_angle = (double)NAN;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    kent_hand_expect(holding_of(&b, r, "C"),
+                     "passive coefficient of 5.0, which is unlikely (40 degrees give "
+                     "4.6); its unit weight is not given, 18.9 kN/m³ is assumed");
+    finish(&b, r);
 }
 
 /* CIRIA Report 128, Guide to the design of thrust blocks (1994), stops at about 1000
@@ -800,6 +815,7 @@ int main(void)
         cmocka_unit_test(a_surge_above_the_test_pressure_is_said),
         cmocka_unit_test(a_governing_peak_of_a_knock_or_of_one_step_is_said),
         cmocka_unit_test(bearing_that_the_depth_cannot_give_is_doubted),
+        cmocka_unit_test(a_bearing_is_doubted_without_a_unit_weight_too),
         cmocka_unit_test(concrete_beyond_a_thousand_kilonewtons_wants_designing),
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),
         cmocka_unit_test(a_thrust_of_less_than_half_a_kilonewton_needs_nothing),
