@@ -13,7 +13,7 @@ enum {
 
 static const char MARK[] = "\xEF\xBB\xBF"; /* byte-order mark */
 
-static kent_status slurp(FILE *file, size_t most, kent_source *out, kent_error *err,
+static kent_status slurp(FILE *file, size_t most, kent_file_bytes *out, kent_error *err,
                          const char *name)
 {
     size_t capacity = 0;
@@ -34,7 +34,7 @@ static kent_status slurp(FILE *file, size_t most, kent_source *out, kent_error *
 }
 
 /* What no line of a file may hold. */
-static bool bytes_are_text(const kent_source *s, const char *name, bool marked,
+static bool bytes_are_text(const kent_file_bytes *s, const char *name, bool marked,
                            kent_complaints *complaints)
 {
     const unsigned char *p = (const unsigned char *)s->bytes;
@@ -79,7 +79,7 @@ static bool bytes_are_text(const kent_source *s, const char *name, bool marked,
 }
 
 /* The byte-order mark goes; "\r\n" and lone "\r" become "\n". */
-static void make_plain(kent_source *s)
+static void make_plain(kent_file_bytes *s)
 {
     size_t to = 0;
     for (size_t i = strncmp(s->bytes, MARK, 3) == 0 ? 3 : 0; i < s->size; i++) {
@@ -106,9 +106,10 @@ static int add_name(kent_files *f, const char *name)
 
 /* Reads an open file; the caller closes it. */
 static kent_status take(kent_files *f, FILE *file, const char *shown, bool marked,
-                        kent_source *out, kent_complaints *complaints, kent_error *err)
+                        kent_file_bytes *out, kent_complaints *complaints,
+                        kent_error *err)
 {
-    kent_source s = {.file = add_name(f, shown)};
+    kent_file_bytes s = {.file = add_name(f, shown)};
     kent_status status = s.file < 0 ? kent_error_nomem(err) : KENT_OK;
     if (status == KENT_OK) {
         const size_t room = f->total < SIZE_MOST ? SIZE_MOST - f->total : 0;
@@ -135,7 +136,7 @@ done:
     return status;
 }
 
-kent_status kent_files_start(kent_files *f, const char *path, kent_source *out,
+kent_status kent_files_start(kent_files *f, const char *path, kent_file_bytes *out,
                              kent_complaints *complaints, kent_error *err)
 {
     const bool standard_input = strcmp(path, "-") == 0;
@@ -160,7 +161,7 @@ kent_status kent_files_start(kent_files *f, const char *path, kent_source *out,
 }
 
 kent_status kent_files_beside(kent_files *f, const char *name, const char *says,
-                              kent_place at, bool marked, kent_source *out,
+                              kent_place at, bool marked, kent_file_bytes *out,
                               kent_complaints *complaints, kent_error *err)
 {
     const char *where = f->names[at.file];

@@ -14,23 +14,23 @@ typedef struct kent_files {
 } kent_files;
 
 /* One file's text: NUL-terminated, lines end in '\n'. The caller frees bytes. */
-typedef struct kent_source {
+typedef struct kent_file_bytes {
     char *bytes;
     size_t size;
     int file; /* index among the names */
-} kent_source;
+} kent_file_bytes;
 
 /* Reads the case file itself; path "-": standard input, whose folder is the working
  * folder. Fails with KENT_E_IO (err), KENT_E_NOMEM (err) or KENT_E_INPUT (a complaint
  * was added): a file that is too large, no UTF-8, or starts with a byte-order mark. */
-kent_status kent_files_start(kent_files *f, const char *path, kent_source *out,
+kent_status kent_files_start(kent_files *f, const char *path, kent_file_bytes *out,
                              kent_complaints *complaints, kent_error *err);
 
 /* Reads a further file of the same folder, or of one below it. says: how it was named,
  * '@include "a.inc"', and at where: both for complaints. marked: it may start with a
  * byte-order mark, which is skipped. A file that cannot be had is KENT_E_INPUT too. */
 kent_status kent_files_beside(kent_files *f, const char *name, const char *says,
-                              kent_place at, bool marked, kent_source *out,
+                              kent_place at, bool marked, kent_file_bytes *out,
                               kent_complaints *complaints, kent_error *err);
 
 void kent_files_clear(kent_files *f);

@@ -92,7 +92,7 @@ static void emit(scanner *s, const char *bytes, size_t count)
 
 /* ---- files ----------------------------------------------------------------------- */
 
-static void push(scanner *s, const kent_source *from)
+static void push(scanner *s, const kent_file_bytes *from)
 {
     s->stack[s->depth++] = (source){
         .bytes = from->bytes, .size = from->size, .file = from->file, .line = 1};
@@ -408,7 +408,7 @@ static size_t lex_sign(scanner *s, const char *p)
 static void include(scanner *s, const char *name, int line)
 {
     char says[100];
-    kent_source found = {0};
+    kent_file_bytes found = {0};
     const kent_place at = {top(s)->file, line};
     (void)snprintf(says, sizeof says, "@include \"%.60s\"", name);
     if (s->depth == INCLUDE_MOST) {
@@ -533,7 +533,7 @@ kent_status kent_scan_read(const char *path, kent_files *files, kent_scan *out,
                            kent_complaints *complaints, kent_error *err)
 {
     const size_t before = complaints->count;
-    kent_source first = {0};
+    kent_file_bytes first = {0};
     kent_status status = kent_files_start(files, path, &first, complaints, err);
     if (status != KENT_OK) return status;
     scanner *s = kent_alloc(1, sizeof *s);
