@@ -73,11 +73,57 @@ void kent_fill_ground(kent_filling *f)
         g->soil = kent_fill_soil_index(f, &r, "soil");
         g->cover = kent_record_number(&r, "cover");
         g->wrapped = kent_record_switch(&r, "wrapped", false);
+        g->trench = kent_record_field(&r, "trench")->index;
     }
     if (there && kent_record_has(&r, "water_table")) {
         g->water_table = kent_record_number(&r, "water_table");
     } else {
         kent_fill_assume(f, "ground water", "none",
                          "no water_table given for the ground");
+    }
+}
+
+/* A place along a pipe has one ground. */
+static void check_overlap(kent_filling *f, kent_record *record, size_t index)
+{
+    const kent_ground_zone *z = &f->model->ground_zones[index];
+    for (size_t i = 0; i < index; i++) {
+        const kent_ground_zone *other = &f->model->ground_zones[i];
+        if (other->pipe != z->pipe || !(z->from < other->to && other->from < z->to)) {
+            continue;
+        }
+        kent_record_complain(
+            &f->reader, record, "from",
+            "it overlaps the zone of the same pipe at line %d; let one "
+            "end where the next starts",
+            other->place.line);
+        return;
+    }
+}
+
+void kent_fill_ground_zone(kent_filling *f, kent_record *record, size_t index)
+{
+    kent_ground_zone *z = &f->model->ground_zones[index];
+    *z = (kent_ground_zone){.pipe = kent_record_field(record, "pipe")->index,
+                            .from = kent_record_number(record, "from"),
+                            .to = kent_record_number(record, "to"),
+                            .soil = kent_fill_soil_index(f, record, "soil"),
+                            .cover = kent_record_number(record, "cover"),
+                            .water_table = kent_record_number(record, "water_table"),
+                            .trench = kent_record_field(record, "trench")->index,
+                            .place = record->place};
+    if (!record->sound) return;
+    if (!(z->from < z->to)) {
+        kent_record_complain(&f->reader, record, "to",
+                             "to must lie beyond from; stations count along the pipe's "
+                             "route");
+    } else if (!kent_record_has(record, "soil") && !kent_record_has(record, "cover") &&
+               !kent_record_has(record, "water_table") &&
+               !kent_record_has(record, "trench")) {
+        kent_record_complain(&f->reader, record, NULL,
+                             "it says nothing of the ground; give soil, cover, "
+                             "water_table or trench");
+    } else {
+        check_overlap(f, record, index);
     }
 }

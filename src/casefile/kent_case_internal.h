@@ -15,6 +15,8 @@ typedef struct kent_filling {
     size_t event_capacity;
     size_t law_capacity;
     size_t port_capacity;
+    size_t level_capacity, scenario_state_capacity;
+    size_t creep_capacity, obstacle_capacity, together_capacity;
 } kent_filling;
 
 /* Reads the group under a key of a record; without one *out is empty. Returns whether
@@ -36,7 +38,11 @@ void kent_fill_solver(kent_filling *f);
  */
 typedef void kent_fill_one(kent_filling *f, kent_record *record, size_t index);
 kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_outflow,
-    kent_fill_valve, kent_fill_scenario, kent_fill_soil, kent_fill_fitting;
+    kent_fill_valve, kent_fill_state, kent_fill_scenario, kent_fill_soil,
+    kent_fill_ground_zone, kent_fill_fitting;
+
+/* The states that a scenario names; without a list it starts from every one. */
+void kent_fill_scenario_states(kent_filling *f, kent_record *record, kent_scenario *s);
 
 /* Index of a soil that a record names, -1 without one; a soil of the catalogue is
  * copied into the model when it is first named. */

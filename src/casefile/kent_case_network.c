@@ -5,6 +5,30 @@
 #include <stdio.h>
 #include <string.h>
 
+static void check_point(kent_filling *f, kent_record *record, const kent_point *p)
+{
+    kent_reader *r = &f->reader;
+    const bool placed = kent_record_has(record, "x") && kent_record_has(record, "y");
+    if (!record->sound) return;
+    if (kent_record_has(record, "x") != kent_record_has(record, "y")) {
+        kent_record_complain(r, record, isnan(p->at.x) ? "y" : "x",
+                             "x and y stand together: give both or neither");
+    } else if (kent_record_has(record, "cover") &&
+               kent_record_has(record, "ground_level")) {
+        kent_record_complain(r, record, "ground_level",
+                             "cover and ground_level are both given; keep one");
+    } else if (placed && kent_record_has(record, "turn")) {
+        kent_record_complain(r, record, "turn",
+                             "turn stands where there are no coordinates; x and y say "
+                             "how the route turns, so leave turn or x and y out");
+    } else if (kent_record_has(record, "station_ahead") &&
+               !kent_record_has(record, "station")) {
+        kent_record_complain(
+            r, record, "station_ahead",
+            "station_ahead needs station, the station on arrival here");
+    }
+}
+
 void kent_fill_point(kent_filling *f, kent_record *record, size_t index)
 {
     kent_point *p = &f->model->points[index];
@@ -14,15 +38,16 @@ void kent_fill_point(kent_filling *f, kent_record *record, size_t index)
         (kent_vec3){kent_record_number(record, "x"), kent_record_number(record, "y"),
                     kent_record_number(record, "z")};
     p->cover = kent_record_number(record, "cover");
+    p->ground_level = kent_record_number(record, "ground_level");
     p->water_table = kent_record_number(record, "water_table");
     p->station = kent_record_number(record, "station");
+    p->station_ahead = kent_record_number(record, "station_ahead");
+    p->turn = kent_record_number(record, "turn");
+    p->curve_radius = kent_record_number(record, "curve_radius");
     p->soil = kent_fill_soil_index(f, record, "soil");
     p->record = kent_record_switch(record, "record", false);
     p->place = record->place;
-    if (record->sound && isnan(p->at.x) != isnan(p->at.y)) {
-        kent_record_complain(&f->reader, record, isnan(p->at.x) ? "y" : "x",
-                             "x and y stand together: give both or neither");
-    }
+    check_point(f, record, p);
 }
 
 /* ---- ends and devices ------------------------------------------------------------ */

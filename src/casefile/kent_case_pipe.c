@@ -163,6 +163,54 @@ static void fill_joint(kent_filling *f, kent_record *record, kent_pipe *p)
     }
 }
 
+static void fill_ratings(const kent_record *record, const kent_pipe_class *row,
+                         kent_pipe *p)
+{
+    p->pressure_rating = kent_record_number_or(record, "pressure_rating",
+                                               row ? row->pressure_rating : NAN);
+    p->surge_rating =
+        kent_record_number_or(record, "surge_rating", row ? row->surge_rating : NAN);
+    p->test_rating =
+        kent_record_number_or(record, "test_rating", row ? row->test_rating : NAN);
+}
+
+/* "EN 545" of "EN 545:2010": the standard without an edition. */
+static bool is_without_edition(const char *name, const char *standard)
+{
+    const size_t n = strlen(name);
+    return strncmp(name, standard, n) == 0 && strchr(":- ", standard[n]) != NULL;
+}
+
+static void fill_standard(kent_filling *f, kent_record *record,
+                          const kent_pipe_class *row, kent_pipe *p)
+{
+    const char *own = kent_record_field(record, "standard")->text;
+    const char *of_class = row ? row->standard : "";
+    const char *holds =
+        !own || (row && is_without_edition(own, of_class)) ? of_class : own;
+    (void)snprintf(p->standard, sizeof p->standard, "%s", holds);
+    if (row && strcmp(holds, of_class) != 0) {
+        kent_notes_add(&f->model->cautions,
+                       "pipe \"%s\": its standard is \"%s\", but class %s is of "
+                       "\"%s\": walls and ratings of two editions do not mix",
+                       p->id, own, row->id, of_class);
+    }
+}
+
+/* A turn against the pipe at its start is for a layout without coordinates. */
+static void check_branch_turn(kent_filling *f, kent_record *record, const kent_pipe *p)
+{
+    const kent_model *m = f->model;
+    if (!record->sound || isnan(p->branch_turn) || p->route_count < 2) return;
+    for (size_t i = 0; i < 2; i++) {
+        if (isnan(m->points[m->route[p->route_first + i]].at.x)) return;
+    }
+    kent_record_complain(
+        &f->reader, record, "branch_turn",
+        "branch_turn stands where there are no coordinates; x and y of "
+        "its points say which way it starts, so leave it out");
+}
+
 void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
 {
     const kent_catalogue *c = f->catalogue;
@@ -176,10 +224,7 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
                                              : NULL;
 
     kent_record_copy(record, "id", NULL, p->id, sizeof p->id);
-    if (row) {
-        memcpy(p->pipe_class, row->id, sizeof p->pipe_class);
-        memcpy(p->standard, row->standard, sizeof p->standard);
-    }
+    if (row) memcpy(p->pipe_class, row->id, sizeof p->pipe_class);
     if (material) memcpy(p->material, material->id, sizeof p->material);
     p->place = record->place;
     p->length = kent_record_number(record, "length");
@@ -187,11 +232,13 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
     p->unit_mass = NAN;
     p->loss = kent_record_number_or(record, "loss", 0.0);
     p->thin_wall = kent_record_field(record, "wall_theory")->index == 1;
-    p->pressure_rating = kent_record_number_or(record, "pressure_rating",
-                                               row ? row->pressure_rating : NAN);
+    p->branch_turn = kent_record_number(record, "branch_turn");
+    fill_ratings(record, row, p);
+    fill_standard(f, record, row, p);
     fill_route(f, record, p);
     fill_diameters(f, record, row, p);
     fill_material(f, record, material, p);
     fill_friction(f, record, material, p);
     fill_joint(f, record, p);
+    check_branch_turn(f, record, p);
 }

@@ -120,6 +120,7 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
     s->duration = kent_record_number(record, "duration");
     s->class_of = class_of >= 0 ? (kent_class)class_of : KENT_OCCASIONAL;
     s->place = record->place;
+    kent_fill_scenario_states(f, record, s);
     s->event_first = m->event_count;
     if (!kent_record_has(record, "class")) {
         kent_fill_assume(f, "class of scenarios that name none",

@@ -14,6 +14,7 @@ static const struct {
     [KENT_SHELF_POINTS] = {"point", "point"},
     [KENT_SHELF_SOILS] = {"soil", "soil"},
     [KENT_SHELF_VALVES] = {"valve", "valve"},
+    [KENT_SHELF_FIXED_LEVELS] = {"fixed_level", "fixed level at"},
     [KENT_SHELF_OUTFLOWS] = {"outflow", "outflow at"},
     [KENT_SHELF_PIPES] = {"pipe", "pipe"},
     [KENT_SHELF_SCENARIOS] = {"scenario", "scenario"},

@@ -15,11 +15,12 @@ typedef enum kent_shelf {
     KENT_SHELF_POINTS,
     KENT_SHELF_SOILS,
     KENT_SHELF_VALVES,
-    KENT_SHELF_OUTFLOWS, /* by the id of their point */
-    KENT_SHELF_PIPES,    /* these three only so that ids are unique */
-    KENT_SHELF_SCENARIOS,
-    KENT_SHELF_FITTINGS,
+    KENT_SHELF_FIXED_LEVELS, /* these two by the id of their point */
+    KENT_SHELF_OUTFLOWS,
+    KENT_SHELF_PIPES,
     KENT_SHELF_STATES,
+    KENT_SHELF_SCENARIOS, /* these two only so that ids are unique */
+    KENT_SHELF_FITTINGS,
     KENT_SHELF_PIPE_CLASSES,
     KENT_SHELF_MATERIALS,
     KENT_SHELF_VALVE_TYPES,

@@ -73,6 +73,50 @@ static inline kent_status read_bytes(const kent_catalogue *catalogue, const char
     return status;
 }
 
+static inline kent_model *read_sound(const kent_catalogue *c, const char *text)
+{
+    kent_complaints complaints;
+    kent_model *m = NULL;
+    const kent_status status = read_bytes(c, text, strlen(text), &m, &complaints);
+    if (status != KENT_OK) print_error("%s\n", complaints.kept[0].what);
+    assert_int_equal(status, KENT_OK);
+    assert_non_null(m);
+    return m;
+}
+
+/* The one complaint of a text, at the line where it belongs. */
+static inline void assert_refused_at(const kent_catalogue *c, const char *text,
+                                     int line, const char *what)
+{
+    kent_complaints complaints;
+    kent_model *m = NULL;
+    assert_int_equal(read_bytes(c, text, strlen(text), &m, &complaints), KENT_E_INPUT);
+    assert_null(m);
+    assert_string_equal(complaints.kept[0].what, what);
+    assert_int_equal(complaints.count, 1);
+    assert_int_equal(complaints.kept[0].line, line);
+}
+
+/* The value noted as assumed for something, NULL where it was not. */
+static inline const char *assumed(const kent_model *m, const char *what)
+{
+    for (size_t i = 0; i < m->assumed.count; i++) {
+        const char *note = m->assumed.text[i];
+        const size_t n = strlen(what);
+        if (strncmp(note, what, n) == 0 && note[n] == '\t') return note + n + 1;
+    }
+    return NULL;
+}
+
+static inline size_t cautions_with(const kent_model *m, const char *words)
+{
+    size_t count = 0;
+    for (size_t i = 0; i < m->cautions.count; i++) {
+        count += strstr(m->cautions.text[i], words) != NULL;
+    }
+    return count;
+}
+
 /* The text with the first `from` replaced by `to`; the caller frees. */
 static inline char *replaced(const char *text, const char *from, const char *to)
 {

@@ -3,28 +3,6 @@
 
 #include <math.h>
 
-static kent_model *read_sound(const kent_catalogue *c, const char *text)
-{
-    kent_complaints complaints;
-    kent_model *m = NULL;
-    const kent_status status = read_bytes(c, text, strlen(text), &m, &complaints);
-    if (status != KENT_OK) print_error("%s\n", complaints.kept[0].what);
-    assert_int_equal(status, KENT_OK);
-    assert_non_null(m);
-    return m;
-}
-
-/* The value noted as assumed for something, NULL where it was not. */
-static const char *assumed(const kent_model *m, const char *what)
-{
-    for (size_t i = 0; i < m->assumed.count; i++) {
-        const char *note = m->assumed.text[i];
-        const size_t n = strlen(what);
-        if (strncmp(note, what, n) == 0 && note[n] == '\t') return note + n + 1;
-    }
-    return NULL;
-}
-
 static void values_arrive_in_si(void **state)
 {
     (void)state;
@@ -348,11 +326,7 @@ static void a_case_may_override_single_design_rules(void **state)
     kent_model *m = read_sound(c, text);
     assert_close(m->rules.least_thickness, 0.6, 1e-12);
     assert_close(m->rules.least_height, 0.3, 1e-12);
-    bool said = false;
-    for (size_t i = 0; i < m->cautions.count; i++) {
-        said = said || strstr(m->cautions.text[i], "design rule least_thickness");
-    }
-    assert_true(said);
+    assert_int_equal(cautions_with(m, "design rule least_thickness"), 1);
     kent_model_free(m);
     free(text);
     kent_catalogue_free(c);

@@ -1,0 +1,112 @@
+/* States: the steady flows that scenarios start from. */
+#include "kent_case_internal.h"
+
+#include <math.h>
+#include <stdio.h>
+
+static bool level_in_range(kent_filling *f, kent_record *record, double level)
+{
+    char range[80];
+    const kent_key *key = kent_key_find("fixed_level", "level");
+    if (level >= key->least && level <= key->most) return true;
+    kent_key_range(key, range, sizeof range);
+    kent_record_complain(&f->reader, record, "levels",
+                         "levels: %.6g m is out of range; the range is %s", level,
+                         range);
+    return false;
+}
+
+/* The pair ( "R1", "88 m" ): which fixed level, and where it stands. */
+static void fill_level(kent_filling *f, kent_record *record, const kent_twig *pair,
+                       kent_state *s)
+{
+    kent_model *m = f->model;
+    kent_reader *r = &f->reader;
+    const bool whole =
+        kent_twig_type_of(pair) == KENT_TWIG_LIST && kent_twig_count(pair) == 2;
+    if (!whole) {
+        kent_record_complain(r, record, "levels",
+                             "element %zu of levels must be a pair, as ( \"R1\", "
+                             "\"%s\" )",
+                             s->level_count + 1,
+                             kent_kind_example(KENT_LENGTH, r->system));
+        return;
+    }
+    const kent_twig *point = kent_twig_child(pair, 0);
+    const int at =
+        kent_record_lookup(r, record, point, "levels", KENT_SHELF_FIXED_LEVELS);
+    const double level = kent_record_item(r, record, kent_twig_child(pair, 1), "levels",
+                                          true, KENT_LENGTH);
+    if (at < 0 || isnan(level) || !level_in_range(f, record, level)) return;
+    for (size_t i = 0; i < s->level_count; i++) {
+        if (m->state_levels[s->level_first + i].fixed_level != at) continue;
+        kent_record_complain(r, record, "levels",
+                             "levels names \"%.60s\" twice; keep one",
+                             kent_twig_text(point));
+        return;
+    }
+    if (kent_grow((void **)&m->state_levels, &f->level_capacity,
+                  m->state_level_count + 1, sizeof *m->state_levels) != 0) {
+        r->failed = true;
+        return;
+    }
+    m->state_levels[m->state_level_count++] = (kent_state_level){at, level};
+    s->level_count++;
+}
+
+void kent_fill_state(kent_filling *f, kent_record *record, size_t index)
+{
+    kent_state *s = &f->model->states[index];
+    const kent_twig *levels = kent_record_field(record, "levels")->twig;
+    const size_t count = levels ? kent_twig_count(levels) : 0;
+    *s = (kent_state){
+        .level_first = f->model->state_level_count,
+        .outflow_factor = kent_record_number_or(record, "outflow_factor", 1.0),
+        .roughness_factor = kent_record_number_or(record, "roughness_factor", 1.0),
+        .place = record->place};
+    kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
+    for (size_t i = 0; i < count && record->sound && !f->reader.failed; i++) {
+        fill_level(f, record, kent_twig_child(levels, i), s);
+    }
+}
+
+void kent_fill_scenario_states(kent_filling *f, kent_record *record, kent_scenario *s)
+{
+    kent_model *m = f->model;
+    kent_reader *r = &f->reader;
+    const kent_twig *list = kent_record_field(record, "states")->twig;
+    const size_t count = list ? kent_twig_count(list) : 0;
+    s->state_first = m->scenario_state_count;
+    if (!kent_record_has(record, "states")) {
+        char all[40];
+        (void)snprintf(all, sizeof all, "all %zu", m->state_count);
+        if (m->state_count > 1) {
+            kent_fill_assume(f, "states of scenarios that name none", all, "not given");
+        }
+        return;
+    }
+    if (list && count == 0) {
+        kent_record_complain(r, record, "states",
+                             "states is empty; leave it out to start from every state");
+        return;
+    }
+    if (kent_grow((void **)&m->scenario_states, &f->scenario_state_capacity,
+                  m->scenario_state_count + count, sizeof *m->scenario_states) != 0) {
+        r->failed = true;
+        return;
+    }
+    for (size_t i = 0; i < count; i++) {
+        const kent_twig *item = kent_twig_child(list, i);
+        const int state =
+            kent_record_lookup(r, record, item, "states", KENT_SHELF_STATES);
+        for (size_t k = 0; state >= 0 && k < s->state_count; k++) {
+            if (m->scenario_states[s->state_first + k] != state) continue;
+            kent_record_complain(r, record, "states",
+                                 "states names \"%.60s\" twice; keep one",
+                                 m->states[state].id);
+            return;
+        }
+        m->scenario_states[m->scenario_state_count++] = state;
+        s->state_count++;
+    }
+}

@@ -1,0 +1,292 @@
+/* Ground, fittings and loads from text to model: values, and what is refused. */
+#include "case_text.h"
+
+#include <math.h>
+
+/* The sound case with zones, an obstacle, a branch and a test by rule. */
+static const char DESIGN[] =
+    "format = 1;\n"
+    "points = (\n"
+    "  { id = \"R1\"; x = \"0 m\"; y = \"0 m\"; z = \"50 m\"; },\n"
+    "  { id = \"T1\"; x = \"200 m\"; y = \"0 m\"; z = \"40 m\"; },\n"
+    "  { id = \"B1\"; x = \"400 m\"; y = \"0 m\"; z = \"30 m\"; },\n"
+    "  { id = \"E1\"; x = \"700 m\"; y = \"300 m\"; z = \"20 m\"; }\n"
+    ");\n"
+    "pipes = ( { id = \"A\"; route = [ \"R1\", \"T1\", \"B1\", \"E1\" ];\n"
+    "  pipe_class = \"DI-EN545-C40-DN300\"; joint = \"push-on\"; } );\n"
+    "fixed_levels = ( { at = \"R1\"; level = \"80 m\"; } );\n"
+    "valves = ( { id = \"V1\"; at = \"E1\"; type = \"butterfly\"; size = \"300 mm\";\n"
+    "  flow = \"100 L/s\"; discharge_level = \"21 m\"; } );\n"
+    "scenarios = ( { id = \"shut\"; duration = \"30 s\"; class = \"occasional\";\n"
+    "  events = ( { valve = \"V1\"; ramp_time = \"10 s\"; to = 0.0; } ); } );\n"
+    "ground = { soil = \"sand-SP\"; cover = \"1.2 m\"; trench = \"type-2\"; };\n"
+    "ground_zones = (\n"
+    "  { pipe = \"A\"; from = \"0+100\"; to = \"0+250\"; soil = \"soft-clay-CH\"; },\n"
+    "  { pipe = \"A\"; from = \"250 m\"; to = \"0+300\"; cover = \"2 m\"; water_table "
+    "= "
+    "\"0.5 m\"; trench = \"type-4\"; } );\n"
+    "fittings = (\n"
+    "  { at = \"B1\"; obstacles = (\n"
+    "    { what = \"sewer\"; direction = [ 3.0, -4.0, 1.0 ]; distance = \"1.8 m\"; "
+    "depth = \"2.5 m\"; } ); } );\n"
+    "loads = { test_pressure = \"12 bar\"; test_gauge_at = \"E1\"; safety_factor = "
+    "1.5;\n"
+    "  future_pressure = \"9 bar\"; future_gauge_at = \"T1\"; };\n";
+
+static void zones_of_ground_arrive(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, DESIGN);
+    assert_int_equal(m->ground.trench, 1);
+    assert_int_equal(m->ground_zone_count, 2);
+    const kent_ground_zone *a = &m->ground_zones[0], *b = &m->ground_zones[1];
+    assert_int_equal(a->pipe, 0);
+    assert_close(a->from, 100.0, 1e-15);
+    assert_close(a->to, 250.0, 1e-15);
+    assert_string_equal(m->soils[a->soil].id, "soft-clay-CH");
+    assert_true(isnan(a->cover) && isnan(a->water_table));
+    assert_int_equal(a->trench, -1);
+    assert_close(b->from, 250.0, 1e-15); /* where the first ends */
+    assert_int_equal(b->soil, -1);
+    assert_close(b->cover, 2.0, 1e-15);
+    assert_close(b->water_table, 0.5, 1e-15);
+    assert_int_equal(b->trench, 3);
+    assert_int_equal(b->place.line, 18);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void an_obstacle_lies_sideways(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, DESIGN);
+    assert_int_equal(m->notes[0].obstacle_count, 1);
+    const kent_obstacle *o = &m->obstacles[m->notes[0].obstacle_first];
+    assert_string_equal(o->what, "sewer");
+    assert_close(o->direction.x, 0.6, 1e-15); /* made level and a unit vector */
+    assert_close(o->direction.y, -0.8, 1e-15);
+    assert_within(o->direction.z, 0.0, 0.0);
+    assert_close(o->distance, 1.8, 1e-15);
+    assert_close(o->depth, 2.5, 1e-15);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void tests_are_stated_or_found_by_a_rule(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys;
+        kent_test_rule rule;
+        double factor, allowance; /* -, Pa */
+        const char *assumed, *value;
+    } ROWS[] = {
+        {"test_rule = \"EN805-surge-calculated\";", KENT_TEST_EN805_CALCULATED, 1.5,
+         2e5, NULL, NULL},
+        {"test_rule = \"EN805-surge-assumed\";", KENT_TEST_EN805_ASSUMED, 1.5, 2e5,
+         "surge allowance of the test", "2 bar\t"},
+        {"test_rule = \"EN805-surge-assumed\"; surge_allowance = \"3 bar\";",
+         KENT_TEST_EN805_ASSUMED, 1.5, 3e5, NULL, NULL},
+        {"test_rule = \"C600\";", KENT_TEST_C600, 1.5, 2e5, NULL, NULL},
+        {"test_rule = \"working-factor\";", KENT_TEST_FACTOR, 1.5, 2e5, "test factor",
+         "1.5\t"},
+        {"test_rule = \"working-factor\"; test_factor = 1.25;", KENT_TEST_FACTOR, 1.25,
+         2e5, NULL, NULL},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = replaced(DESIGN, "test_pressure = \"12 bar\";", ROWS[i].keys);
+        kent_model *m = read_sound(c, text);
+        assert_int_equal(m->loads.test_rule, ROWS[i].rule);
+        assert_true(isnan(m->loads.test_pressure));
+        assert_int_equal(m->loads.test_gauge, 3);
+        assert_close(m->loads.test_factor, ROWS[i].factor, 1e-15);
+        assert_close(m->loads.surge_allowance, ROWS[i].allowance, 1e-12);
+        assert_true(ROWS[i].assumed || (!assumed(m, "test factor") &&
+                                        !assumed(m, "surge allowance of the test")));
+        if (ROWS[i].assumed) {
+            const char *note = assumed(m, ROWS[i].assumed);
+            assert_non_null(note);
+            assert_memory_equal(note, ROWS[i].value, strlen(ROWS[i].value));
+        }
+        kent_model_free(m);
+        free(text);
+    }
+    kent_model *m = read_sound(c, DESIGN);
+    assert_int_equal(m->loads.test_rule, KENT_TEST_FIXED);
+    assert_close(m->loads.future_pressure, 9e5, 1e-12);
+    assert_int_equal(m->loads.future_gauge, 1);
+    assert_null(assumed(m, "test factor"));
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+#define LOADS  "test_pressure = \"12 bar\"; test_gauge_at = \"E1\";"
+#define FUTURE "future_pressure = \"9 bar\"; future_gauge_at = \"T1\";"
+#define ZONE   "soil = \"soft-clay-CH\";"
+#define BRANCH                                                                         \
+    "{ at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; outside_diameter = "
+
+/* A piece of DESIGN, what stands in its place, and the one complaint. */
+static const struct {
+    const char *from, *to;
+    int line;
+    const char *what;
+} FAULTS[] = {
+    {"pipe = \"A\"; from = \"0+100\"", "pipe = \"B\"; from = \"0+100\"", 17,
+     "ground zone 1: pipe: there is no pipe \"B\"; did you mean \"A\"?"},
+    {"\"0+250\"", "\"0+100\"", 17,
+     "ground zone 1: to must lie beyond from; stations count along the pipe's route"},
+    {ZONE, "", 17,
+     "ground zone 1: it says nothing of the ground; give soil, cover, water_table or "
+     "trench"},
+    {"\"250 m\"", "\"249.9 m\"", 18,
+     "ground zone 2: it overlaps the zone of the same pipe at line 17; let one end "
+     "where "
+     "the next starts"},
+    {"[ 3.0, -4.0, 1.0 ]", "[ 0.0, 0.0, 1.0 ]", 21,
+     "fitting at \"B1\": obstacle 1: direction must point sideways: what lies above or "
+     "below is no obstacle to a block"},
+    {"at = \"B1\";", "at = \"B1\"; together_with = [ \"X1\" ];", 20,
+     "fitting at \"B1\": together_with: there is no point \"X1\"; did you mean "
+     "\"B1\"?"},
+    {"at = \"B1\";", "at = \"B1\"; together_with = [ \"T1\", \"B1\" ];", 20,
+     "fitting at \"B1\": together_with names \"B1\" itself; name the others"},
+    {"at = \"B1\";", "at = \"B1\"; together_with = [ \"T1\", \"T1\" ];", 20,
+     "fitting at \"B1\": together_with names \"T1\" twice; keep one"},
+    {"at = \"B1\";", "at = \"B1\"; together_with = [ ];", 20,
+     "fitting at \"B1\": together_with is empty; name the points whose fittings are "
+     "held "
+     "as one with this"},
+    {"at = \"B1\";", "at = \"B1\"; together_with = [ \"T1\" ]; apart = true;", 20,
+     "fitting at \"B1\": apart and together_with contradict each other; keep one"},
+    {"{ at = \"B1\";", BRANCH "\"118 mm\"; end = \"shut\"; }; }, { at = \"B1\";", 20,
+     "fitting at \"T1\": branch: end = \"shut\" is not known; it is one of \"blank\", "
+     "\"valve\", \"open\""},
+    {"{ at = \"B1\";",
+     BRANCH "\"118 mm\"; inside_diameter = \"118 mm\"; end = \"open\"; }; }, { at = "
+            "\"B1\";",
+     20, "fitting at \"T1\": branch: inside_diameter is not below outside_diameter"},
+    {LOADS, LOADS " test_rule = \"C600\";", 22,
+     "loads: test_rule and test_pressure are both given; keep one"},
+    {LOADS, "test_rule = \"C600\";", 22,
+     "loads: test_rule needs test_gauge_at, the point where the pressure is read"},
+    {LOADS, "test_gauge_at = \"E1\";", 22,
+     "loads: test_gauge_at needs test_pressure, the pressure read there, or test_rule"},
+    {LOADS, LOADS " test_factor = 1.4;", 22,
+     "loads: test_factor is read by test_rule \"working-factor\" alone; name that "
+     "rule, "
+     "or leave it out"},
+    {LOADS,
+     "test_gauge_at = \"E1\"; test_rule = \"EN805-surge-calculated\"; surge_allowance "
+     "= "
+     "\"2 bar\";",
+     22,
+     "loads: surge_allowance is read by test_rule \"EN805-surge-assumed\" alone; name "
+     "that rule, or leave it out"},
+    {LOADS,
+     "test_gauge_at = \"E1\"; test_rule = \"EN805-surge-assumed\"; surge_allowance = "
+     "\"1.9 bar\";",
+     22,
+     "loads: surge_allowance = \"1.9 bar\" is out of range; the range is 2 to 1000 "
+     "bar"},
+    {FUTURE, "future_pressure = \"9 bar\";", 23,
+     "loads: future_pressure needs future_gauge_at, the point where it is read"},
+    {FUTURE, "future_gauge_at = \"T1\";", 23,
+     "loads: future_gauge_at needs future_pressure, the pressure read there"},
+};
+
+static void each_fault_gets_its_one_complaint(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof FAULTS / sizeof FAULTS[0]; i++) {
+        char *text = replaced(DESIGN, FAULTS[i].from, FAULTS[i].to);
+        assert_refused_at(c, text, FAULTS[i].line, FAULTS[i].what);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_surge_to_test_by_needs_scenarios(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *a = replaced(DESIGN, "test_pressure = \"12 bar\";",
+                       "test_rule = \"EN805-surge-calculated\";");
+    char *b = replaced(a, "scenarios = (", "/* scenarios = (");
+    char *text = replaced(b, "ground = {", "*/ ground = {");
+    assert_refused_at(c, text, 22,
+                      "loads: \"EN805-surge-calculated\" takes the surge of the "
+                      "scenarios, and the case has none; describe them, or take "
+                      "\"EN805-surge-assumed\"");
+    free(a);
+    free(b);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+/* A fitting stated by its ports alone, with room for a key and for loads. */
+static const char PORTS[] =
+    "format = 1;\n"
+    "points = ( { id = \"P\"; z = \"3 m\"; } );\n"
+    "fittings = ( { id = \"B7\"; type = \"bend\"; ports = (\n"
+    "  { direction = [ -1.0, 0.0, 0.0 ]; pressure = \"14 bar\"; inside_diameter = "
+    "\"600 "
+    "mm\"; },\n"
+    "  { direction = [ 0.0, 1.0, 0.0 ]; pressure = \"14 bar\"; inside_diameter = \"600 "
+    "mm\"; } ); } );\n"
+    "loads = { safety_factor = 1.5; };\n";
+
+static void what_needs_a_main_is_refused_beside_ports(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *from, *to;
+        int line;
+        const char *what;
+    } ROWS[] = {
+        {"type = \"bend\";", "apart = true;", 3,
+         "fitting \"B7\": apart is of a fitting found from geometry; ports state every "
+         "leg of this one"},
+        {"type = \"bend\";", "together_with = [ \"P\" ];", 3,
+         "fitting \"B7\": together_with is of a fitting found from geometry; ports "
+         "state "
+         "every leg of this one"},
+        {"type = \"bend\";",
+         "branch = { outside_diameter = \"118 mm\"; end = \"blank\"; };", 3,
+         "fitting \"B7\": branch is of a fitting found from geometry; ports state "
+         "every "
+         "leg of this one"},
+        {"safety_factor", "test_rule = \"C600\"; safety_factor", 6,
+         "loads: test_rule works from the pressures along pipes, and the case has "
+         "none; "
+         "state the pressure of each port"},
+        {"safety_factor",
+         "future_pressure = \"9 bar\"; future_gauge_at = \"P\"; safety_factor", 6,
+         "loads: future_pressure is of a main with pipes, and the case has none; state "
+         "the pressure of each port"},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = replaced(PORTS, ROWS[i].from, ROWS[i].to);
+        assert_refused_at(c, text, ROWS[i].line, ROWS[i].what);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(zones_of_ground_arrive),
+        cmocka_unit_test(an_obstacle_lies_sideways),
+        cmocka_unit_test(tests_are_stated_or_found_by_a_rule),
+        cmocka_unit_test(each_fault_gets_its_one_complaint),
+        cmocka_unit_test(a_surge_to_test_by_needs_scenarios),
+        cmocka_unit_test(what_needs_a_main_is_refused_beside_ports),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}

@@ -1,0 +1,224 @@
+/* Points, pipes and states from text to model: values, and what is refused. */
+#include "case_text.h"
+
+#include <math.h>
+
+/* A main by its lengths alone, with a value at every key of points, pipes and states.
+ */
+static const char MAIN[] =
+    "format = 1;\n"
+    "water = { temperature = \"12 degC\"; gas_content = 0.002; };\n"
+    "points = (\n"
+    "  { id = \"R\"; z = \"50 m\"; station = \"0+100\"; station_ahead = \"2+000\"; },\n"
+    "  { id = \"K\"; z = \"30 m\"; station = \"2+410\"; turn = \"30 deg right\";\n"
+    "    ground_level = \"32 m\"; },\n"
+    "  { id = \"W\"; z = \"25 m\"; station = \"2+600\"; curve_radius = \"250 m\"; } "
+    ");\n"
+    "pipes = (\n"
+    "  { id = \"A\"; route = [ \"R\", \"K\" ]; length = \"410 m\";\n"
+    "    pipe_class = \"DI-EN545-C40-DN300\"; pressure_rating = \"16 bar\";\n"
+    "    surge_rating = \"19 bar\"; test_rating = \"25 bar\"; },\n"
+    "  { id = \"B\"; route = [ \"K\", \"W\" ]; length = \"190 m\"; branch_turn = \"40 "
+    "deg "
+    "left\";\n"
+    "    pipe_class = \"DI-EN545-C40-DN300\"; } );\n"
+    "fixed_levels = ( { at = \"R\"; level = \"80 m\"; } );\n"
+    "outflows = ( { at = \"W\"; flow = \"18 L/s\"; } );\n"
+    "states = ( { id = \"high\"; },\n"
+    "  { id = \"low\"; levels = ( ( \"R\", \"76.5 m\" ) ); outflow_factor = 0.3;\n"
+    "    roughness_factor = 1.2; } );\n"
+    "scenarios = (\n"
+    "  { id = \"a\"; duration = \"30 s\"; states = [ \"low\" ];\n"
+    "    events = ( { outflow = \"W\"; ramp_time = \"5 s\"; to = \"0 L/s\"; } ); },\n"
+    "  { id = \"b\"; duration = \"30 s\"; states = ( \"low\", \"high\" );\n"
+    "    events = ( { outflow = \"W\"; ramp_time = \"9 s\"; to = \"0 L/s\"; } ); } );\n"
+    "fittings = ( { at = \"K\"; type = \"bend\"; angle = \"30 deg\"; } );\n";
+
+static void stations_turns_and_curves_arrive(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, MAIN);
+    const double degree = acos(-1.0) / 180.0;
+    assert_close(m->points[0].station, 100.0, 1e-15);
+    assert_close(m->points[0].station_ahead, 2000.0, 1e-15);
+    assert_close(m->points[1].turn, -30.0 * degree, 1e-12); /* + to the left */
+    assert_close(m->points[1].ground_level, 32.0, 1e-15);
+    assert_close(m->points[2].curve_radius, 250.0, 1e-15);
+    assert_true(isnan(m->points[1].station_ahead));
+    assert_true(isnan(m->points[0].turn));
+    assert_true(isnan(m->points[0].curve_radius));
+    assert_close(m->pipes[1].branch_turn, 40.0 * degree, 1e-12);
+    assert_true(isnan(m->pipes[0].branch_turn));
+    assert_close(m->gas_content, 0.002, 1e-15);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_rating_of_the_case_replaces_the_class_s(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, MAIN);
+    const kent_pipe_class *row = kent_catalogue_pipe(c, "DI-EN545-C40-DN300");
+    assert_close(m->pipes[0].pressure_rating, 16e5, 1e-12);
+    assert_close(m->pipes[0].surge_rating, 19e5, 1e-12);
+    assert_close(m->pipes[0].test_rating, 25e5, 1e-12);
+    assert_close(m->pipes[1].pressure_rating, row->pressure_rating, 1e-15);
+    assert_string_equal(m->pipes[1].standard, row->standard);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_standard_of_another_edition_is_cautioned(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *own, *holds;
+        size_t cautions;
+    } ROWS[] = {{"EN 545", "EN 545:2010", 0},
+                {"EN 545:2010", "EN 545:2010", 0},
+                {"EN 545:2006", "EN 545:2006", 1},
+                {"EN 54", "EN 54", 1}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char piece[80];
+        (void)snprintf(piece, sizeof piece, "standard = \"%s\"; pressure_rating",
+                       ROWS[i].own);
+        char *text = replaced(MAIN, "pressure_rating", piece);
+        kent_model *m = read_sound(c, text);
+        assert_string_equal(m->pipes[0].standard, ROWS[i].holds);
+        assert_int_equal(cautions_with(m, "two editions do not mix"), ROWS[i].cautions);
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void states_hold_their_levels_and_factors(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, MAIN);
+    assert_int_equal(m->state_count, 2);
+    const kent_state *high = &m->states[0], *low = &m->states[1];
+    assert_string_equal(low->id, "low");
+    assert_int_equal(high->level_count, 0);
+    assert_close(high->outflow_factor, 1.0, 1e-15);
+    assert_close(high->roughness_factor, 1.0, 1e-15);
+    assert_int_equal(low->level_count, 1);
+    assert_int_equal(m->state_levels[low->level_first].fixed_level, 0);
+    assert_close(m->state_levels[low->level_first].level, 76.5, 1e-15);
+    assert_close(low->outflow_factor, 0.3, 1e-15);
+    assert_close(low->roughness_factor, 1.2, 1e-15);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_scenario_starts_from_the_states_it_names(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, MAIN);
+    const kent_scenario *a = &m->scenarios[0], *b = &m->scenarios[1];
+    assert_int_equal(a->state_count, 1);
+    assert_int_equal(m->scenario_states[a->state_first], 1);
+    assert_int_equal(b->state_count, 2);
+    assert_int_equal(m->scenario_states[b->state_first], 1);
+    assert_int_equal(m->scenario_states[b->state_first + 1], 0);
+    assert_int_equal(m->march_count, 3);
+    assert_null(assumed(m, "states of scenarios that name none"));
+    kent_model_free(m);
+
+    char *text = replaced(MAIN, "states = [ \"low\" ];", "");
+    m = read_sound(c, text);
+    assert_int_equal(m->scenarios[0].state_count, 0);
+    assert_int_equal(m->march_count, 4);
+    assert_string_equal(assumed(m, "states of scenarios that name none"),
+                        "all 2\tnot given");
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+/* A piece of MAIN, what stands in its place, and the one complaint. */
+static const struct {
+    const char *from, *to;
+    int line;
+    const char *what;
+} FAULTS[] = {
+    {"ground_level = \"32 m\";", "ground_level = \"32 m\"; cover = \"1 m\";", 6,
+     "point \"K\": cover and ground_level are both given; keep one"},
+    {"turn = \"30 deg right\";", "turn = \"30 deg right\"; x = \"0 m\"; y = \"0 m\";",
+     5,
+     "point \"K\": turn stands where there are no coordinates; x and y say how the "
+     "route turns, so leave turn or x and y out"},
+    {"turn = \"30 deg right\";", "x = \"0 m\";", 5,
+     "point \"K\": x and y stand together: give both or neither"},
+    {"station = \"0+100\";", "", 4,
+     "point \"R\": station_ahead needs station, the station on arrival here"},
+    {"( \"R\", \"76.5 m\" )", "( \"R\" )", 17,
+     "state \"low\": element 1 of levels must be a pair, as ( \"R1\", \"1.4 m\" )"},
+    {"( \"R\", \"76.5 m\" )", "\"R\"", 17,
+     "state \"low\": element 1 of levels must be a pair, as ( \"R1\", \"1.4 m\" )"},
+    {"( \"R\", \"76.5 m\" )", "( \"R1\", \"76.5 m\" )", 17,
+     "state \"low\": levels: there is no fixed level at \"R1\"; did you mean \"R\"?"},
+    {"( \"R\", \"76.5 m\" )", "( \"R\", 76.5 )", 17,
+     "state \"low\": levels = 76.5 has no unit; write for instance \"1.4 m\" or \"4.5 "
+     "ft\""},
+    {"( \"R\", \"76.5 m\" )", "( \"R\", \"76.5 km\" )", 17,
+     "state \"low\": levels: 76500 m is out of range; the range is -1000 to 9000 m"},
+    {"( \"R\", \"76.5 m\" )", "( \"R\", \"76.5 m\" ), ( \"R\", \"70 m\" )", 17,
+     "state \"low\": levels names \"R\" twice; keep one"},
+    {"{ id = \"high\"; }", "{ id = \"high\"; }, { id = \"high\"; }", 16,
+     "state \"high\" is given twice, first at line 16"},
+    {"[ \"low\" ]", "[ \"lo\" ]", 20,
+     "scenario \"a\": states: there is no state \"lo\"; did you mean \"low\"?"},
+    {"[ \"low\" ]", "[ \"low\", \"low\" ]", 20,
+     "scenario \"a\": states names \"low\" twice; keep one"},
+    {"[ \"low\" ]", "[ ]", 20,
+     "scenario \"a\": states is empty; leave it out to start from every state"},
+    {"at = \"R\"; level = \"80 m\"; }",
+     "at = \"R\"; level = \"80 m\"; },\n { at = \"R\"; level = \"81 m\"; }", 15,
+     "fixed level at \"R\" is given twice, first at line 14"},
+};
+
+static void each_fault_gets_its_one_complaint(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof FAULTS / sizeof FAULTS[0]; i++) {
+        char *text = replaced(MAIN, FAULTS[i].from, FAULTS[i].to);
+        assert_refused_at(c, text, FAULTS[i].line, FAULTS[i].what);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_pipe_between_coordinates_has_no_turn_of_its_own(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        replaced(SOUND_CASE, "joint = \"push-on\";", "branch_turn = \"5 deg left\";");
+    assert_refused_at(
+        c, text, 9,
+        "pipe \"A\": branch_turn stands where there are no coordinates; x "
+        "and y of its points say which way it starts, so leave it out");
+    free(text);
+    kent_catalogue_free(c);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(stations_turns_and_curves_arrive),
+        cmocka_unit_test(a_rating_of_the_case_replaces_the_class_s),
+        cmocka_unit_test(a_standard_of_another_edition_is_cautioned),
+        cmocka_unit_test(states_hold_their_levels_and_factors),
+        cmocka_unit_test(a_scenario_starts_from_the_states_it_names),
+        cmocka_unit_test(each_fault_gets_its_one_complaint),
+        cmocka_unit_test(a_pipe_between_coordinates_has_no_turn_of_its_own),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
