@@ -306,17 +306,19 @@ static kent_exit command_keys(session *s)
 /* What was understood is printed even where no steady state is found. */
 static kent_exit command_check(session *s)
 {
-    kent_steady *steady = NULL;
+    kent_steady **steadies = NULL;
     kent_text text = {0};
     kent_status solved = KENT_OK;
     kent_exit code = read_case(s);
     if (code) return code;
     const kent_report_options o = report_options(s);
+    steadies = kent_alloc(s->model->state_count, sizeof *steadies);
+    if (!steadies) return fail(s, kent_error_nomem(&s->error));
     if (s->model->span_count > 0) {
-        solved = kent_steady_solve(s->model, &steady, &s->error);
+        solved = kent_steady_solve(s->model, &steadies[0], &s->error);
     }
     const kent_status status =
-        kent_report_check(s->model, steady, &o, kent_output_gather(&text));
+        kent_report_check(s->model, steadies, &o, kent_output_gather(&text));
     if (solved) {
         (void)kent_output_print(&text, &s->error); /* the first cause stays */
         code = fail(s, solved);
@@ -324,7 +326,8 @@ static kent_exit command_check(session *s)
         code = print_report(s, status, &text);
     }
     kent_text_clear(&text);
-    kent_steady_free(steady);
+    kent_steady_free(steadies[0]);
+    free(steadies);
     return code;
 }
 

@@ -32,8 +32,9 @@ kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
 kent_status kent_report_profile_csv(const kent_results *r, size_t scenario,
                                     kent_sink sink);
 
-/* `check`: what was understood. steady may be NULL where none was found. */
-kent_status kent_report_check(const kent_model *m, const kent_steady *s,
+/* `check`: what was understood. steadies: [state_count] of each state, NULL where none
+ * was found; NULL: of no state. */
+kent_status kent_report_check(const kent_model *m, kent_steady *const *steadies,
                               const kent_report_options *o, kent_sink sink);
 
 /* `check --keys`: the key table, as the tables of docs/case-format.md. */

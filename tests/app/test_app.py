@@ -326,7 +326,7 @@ class App(unittest.TestCase):
     def test_check_writes_nothing_and_says_what_it_understood(self):
         r = self.call("check", "main.cfg")
         self.assertEqual((r.returncode, r.stderr), (0, ""))
-        for word in ["Fittings found", "bend 45.", "Assumed", "DI-EN545-C40-DN300"]:
+        for word in ["The main, point by point", "bend 45.", "Assumed", "DI-EN545-C40-DN300"]:
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 

@@ -1,0 +1,120 @@
+/* States that scenarios start from, and scenarios, in words. */
+#include "kent_view.h"
+
+#include <math.h>
+#include <string.h>
+
+static const char *said(const kent_view *v, kent_kind kind, double si, kent_shown *room)
+{
+    *room = kent_shown_with_unit(kind, v->units, si);
+    return room->text;
+}
+
+/* ---- states ---------------------------------------------------------------------- */
+
+static void say_state(const kent_view *v, const kent_state *s)
+{
+    const kent_model *m = v->model;
+    kent_text words = {0};
+    kent_shown level;
+    kent_text_add(&words, "%s:", s->id);
+    for (size_t i = 0; i < s->level_count; i++) {
+        const kent_state_level *l = &m->state_levels[s->level_first + i];
+        kent_text_add(&words, " %s at %s,",
+                      kent_view_point(m, m->fixed_levels[l->fixed_level].point),
+                      said(v, KENT_LENGTH, l->level, &level));
+    }
+    if (s->level_count == 0) kent_text_add(&words, " levels as they stand,");
+    kent_text_add(&words, " outflows × %.2f, roughness × %.2f.", s->outflow_factor,
+                  s->roughness_factor);
+    kent_view_say(v, "-  ", &words);
+    kent_text_clear(&words);
+}
+
+void kent_view_states_said(const kent_view *v)
+{
+    const kent_model *m = v->model;
+    if (m->state_count < 2) return;
+    kent_text_add(v->out, "\nSteady states that scenarios start from\n");
+    for (size_t i = 0; i < m->state_count; i++) {
+        say_state(v, &m->states[i]);
+    }
+}
+
+/* ---- scenarios ------------------------------------------------------------------- */
+
+static void add_opening(double opening, kent_text *out)
+{
+    if (opening <= 0.0) {
+        kent_text_add(out, "closed");
+    } else if (opening >= 1.0) {
+        kent_text_add(out, "fully open");
+    } else {
+        kent_text_add(out, "%.2f open", opening);
+    }
+}
+
+/* "valve V1 goes from fully open to closed in 12 s, from 1 s on" */
+static void add_event(const kent_view *v, const kent_event *e, kent_text *out)
+{
+    const kent_model *m = v->model;
+    kent_shown s;
+    switch (e->kind) {
+    case KENT_EVENT_VALVE:
+        kent_text_add(out, "valve %s goes from ", m->valves[e->target].id);
+        add_opening(m->valves[e->target].opening, out);
+        break;
+    case KENT_EVENT_OUTFLOW:
+        kent_text_add(out, "the outflow at %s goes from %s",
+                      kent_view_point(m, m->outflows[e->target].point),
+                      said(v, KENT_FLOW, m->outflows[e->target].flow, &s));
+        break;
+    }
+    if (e->law_count > 0) {
+        kent_text_add(out, " by a law of %zu points", e->law_count);
+    } else if (e->kind == KENT_EVENT_VALVE) {
+        kent_text_add(out, " to ");
+        add_opening(e->to, out);
+        kent_text_add(out, " in %.4g s", e->ramp_time);
+    } else {
+        kent_text_add(out, " to %s in %.4g s", said(v, KENT_FLOW, e->to, &s),
+                      e->ramp_time);
+    }
+    kent_text_add(out, ", from %.4g s on", e->start_time);
+}
+
+static void add_start(const kent_view *v, const kent_scenario *s, kent_text *out)
+{
+    const kent_model *m = v->model;
+    if (m->state_count < 2) return;
+    if (s->state_count == 0) {
+        kent_text_add(out, "; from every state");
+        return;
+    }
+    for (size_t i = 0; i < s->state_count; i++) {
+        kent_text_add(out, "%s%s", i > 0 ? ", " : "; from ",
+                      m->states[m->scenario_states[s->state_first + i]].id);
+    }
+}
+
+void kent_view_scenarios(const kent_view *v)
+{
+    const kent_model *m = v->model;
+    kent_text words = {0};
+    if (m->scenario_count > 0) kent_text_add(v->out, "\nScenarios\n");
+    for (size_t i = 0; i < m->scenario_count; i++) {
+        const kent_scenario *s = &m->scenarios[i];
+        const bool titled = s->title[0] != '\0' && strcmp(s->title, s->id) != 0;
+        kent_text_add(&words, "%s: %s%s%s, %.4g s", s->id, titled ? s->title : "",
+                      titled ? "; " : "", kent_class_word(s->class_of), s->duration);
+        add_start(v, s, &words);
+        for (size_t k = 0; k < s->event_count; k++) {
+            kent_text_add(&words, "; ");
+            add_event(v, &m->events[s->event_first + k], &words);
+        }
+        if (s->event_count == 0) kent_text_add(&words, "; nothing moves");
+        kent_text_add(&words, ".");
+        kent_view_say(v, "-  ", &words);
+    }
+    kent_text_clear(&words);
+}
