@@ -19,33 +19,34 @@ typedef struct kent_site {
     kent_complaints *complaints;
     kent_port *ports; /* [count] at most KENT_ARMS are kept */
     size_t count;
-    bool schematic;    /* some leg has no coordinates */
-    double deflection; /* rad that the joints here take: the least of the legs' */
-    bool rigid;        /* no leg's joint slips */
+    kent_branch branch; /* end NONE: none */
+    bool schematic;     /* some leg has no coordinates */
+    double deflection;  /* rad that the joints here take: the least of the legs' */
+    bool rigid;         /* no leg's joint slips */
 } kent_site;
 
 static double degrees(double angle) { return angle * 180.0 / PI; }
 
-/* Which leg counts a type may have. */
-static bool type_fits(kent_fitting_type type, size_t count)
+/* Whether a type may have so many legs, and branches without a pipe (0 or 1). */
+static bool type_fits(kent_fitting_type type, size_t count, size_t branches)
 {
     switch (type) {
     case KENT_BEND:
     case KENT_REDUCER:
     case KENT_STRAIGHT:
     case KENT_CURVE:
-        return count == 2;
+        return count == 2 && branches == 0;
     case KENT_TEE:
     case KENT_WYE:
-        return count == 3;
+        return count + branches == 3;
     case KENT_CROSS:
-        return count >= 4;
+        return count + branches >= 4;
     case KENT_GROUP:
         return count >= 1;
     case KENT_DEAD_END:
         return count == 1;
     case KENT_VALVE:
-        return count == 1 || count == 2;
+        return (count == 1 || count == 2) && branches == 0;
     }
     return false;
 }
@@ -134,8 +135,13 @@ static void put_branch_last(kent_port ports[3])
     ports[2] = leg;
 }
 
+/* Of the third leg, or of the branch without a pipe on a run. */
 static double branch_angle_of(const kent_site *site)
 {
+    if (site->count == 2) {
+        return fmin(kent_vec3_angle(site->branch.direction, site->ports[0].direction),
+                    kent_vec3_angle(site->branch.direction, site->ports[1].direction));
+    }
     if (!site->schematic) return kent_ports_branch_angle(site->ports);
     return site->note && isfinite(site->note->angle) ? site->note->angle : 0.5 * PI;
 }
@@ -159,10 +165,13 @@ static int natural_type(const kent_site *site)
     const kent_device_kind device = site->device.kind;
     if (device == KENT_DEVICE_VALVE) return KENT_VALVE;
     if (device == KENT_DEVICE_LEVEL) return NO_FITTING; /* the pipe ends in a tank */
+    const bool branch = site->branch.end != KENT_BRANCH_NONE;
+    const bool hydrant = site->note && site->note->role == KENT_ROLE_HYDRANT;
     if (site->count == 1) {
-        return device == KENT_DEVICE_OUTFLOW ? (int)NO_FITTING : (int)KENT_DEAD_END;
+        const bool end = device != KENT_DEVICE_OUTFLOW || branch || hydrant;
+        return end ? (int)KENT_DEAD_END : (int)NO_FITTING;
     }
-    if (site->count == 2) {
+    if (site->count == 2 && !branch) {
         if (!kent_ports_same_size(&site->ports[0], &site->ports[1])) {
             return KENT_REDUCER;
         }
@@ -171,10 +180,33 @@ static int natural_type(const kent_site *site)
         return turn > KENT_LEAST_TURN ? (int)KENT_BEND
                                       : (int)NO_FITTING; /* NAN: none */
     }
-    if (site->count == 3) {
+    if (site->count + branch == 3) {
         return branch_angle_of(site) < WYE_BELOW ? KENT_WYE : KENT_TEE;
     }
     return KENT_CROSS;
+}
+
+/* Direction and bore of a branch without a pipe, before the type goes by them. */
+static bool settle_branch(kent_site *site)
+{
+    const kent_fitting_note *note = site->note;
+    if (!note) return true;
+    if (!kent_branch_stands(site->m, note, site->device, site->count,
+                            site->complaints)) {
+        return false;
+    }
+    if (note->branch.end == KENT_BRANCH_NONE || site->count >= KENT_ARMS) return true;
+    if (site->schematic) {
+        const double angle = site->count > 2 ? note->angle : 0.0;
+        kent_ports_schematic(site->ports, site->count, angle, KENT_HORIZONTAL);
+    }
+    site->branch = note->branch;
+    if (isnan(site->branch.inside_diameter)) {
+        site->branch.inside_diameter = site->branch.outside_diameter;
+    }
+    const bool surveyed = !site->schematic && !site->m->points[site->point].laid_out;
+    return kent_branch_direct(site->m, note, site->ports, site->count, surveyed,
+                              &site->branch.direction, site->complaints);
 }
 
 /* The type after the note's say; NO_FITTING with a complaint where a note cannot be
@@ -209,7 +241,7 @@ static int settle_type(const kent_site *site)
                             id);
         return NO_FITTING;
     }
-    if (!type_fits(asked, site->count)) {
+    if (!type_fits(asked, site->count, site->branch.end != KENT_BRANCH_NONE)) {
         kent_place_complain(m, note->place, site->complaints,
                             "fitting at \"%s\": %zu leg%s there cannot be a %s; leave "
                             "its type out, or correct the routes",
@@ -227,7 +259,9 @@ static bool settle_directions(const kent_site *site, kent_fitting_type type)
     const kent_fitting_note *note = site->note;
     const bool says_angle = note && isfinite(note->angle);
     const bool says_way = note && note->orientation >= 0;
-    const bool branches = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
+    const bool extra = site->branch.end != KENT_BRANCH_NONE;
+    const bool branches =
+        extra || type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
     const char *wrong = NULL;
 
     if (!site->schematic) {
@@ -253,7 +287,7 @@ static bool settle_directions(const kent_site *site, kent_fitting_type type)
                             site->m->points[site->point].id, wrong);
         return false;
     }
-    if (site->schematic) {
+    if (site->schematic && !extra) {
         const double angle = says_angle ? note->angle : branches ? 0.5 * PI : 0.0;
         kent_ports_schematic(site->ports, site->count, angle,
                              says_way ? (kent_orientation)note->orientation
@@ -263,7 +297,7 @@ static bool settle_directions(const kent_site *site, kent_fitting_type type)
 }
 
 /* What the legs themselves say: angle, way, sizes. */
-static void describe_legs(kent_fitting *f, const kent_port *ports)
+static void describe_legs(kent_fitting *f, const kent_port *ports, size_t legs)
 {
     const kent_port *largest = &ports[kent_ports_largest(ports, f->port_count)];
     f->size = largest->inside_diameter;
@@ -278,9 +312,11 @@ static void describe_legs(kent_fitting *f, const kent_port *ports)
     if (f->type == KENT_REDUCER && kent_ports_turn(ports) > KENT_LEAST_TURN) {
         f->angle = kent_ports_turn(ports);
     }
-    if (f->port_count >= 3) {
+    if (legs >= 3) {
         f->angle = kent_ports_branch_angle(ports);
         f->branch_size = ports[2].inside_diameter;
+    } else if (f->branch.end != KENT_BRANCH_NONE) {
+        f->branch_size = f->branch.inside_diameter;
     }
 }
 
@@ -339,6 +375,20 @@ static void caution_turning(const kent_site *site, const kent_fitting *f)
                    kent_fitting_type_word(f->type), f->id, degrees(turn));
 }
 
+/* The force that pulls at the fitting pushes such an end off as well. */
+static void caution_cap(const kent_site *site)
+{
+    if (site->branch.end == KENT_BRANCH_OPEN || !kent_joint_slips(site->branch.joint)) {
+        return;
+    }
+    kent_notes_add(&site->m->cautions,
+                   "branch at \"%s\" ends on a %s joint: the thrust there pushes its "
+                   "end off as well, which needs a block of its own or a joint that "
+                   "holds",
+                   site->m->points[site->point].id,
+                   kent_joint_word(site->branch.joint));
+}
+
 bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                      const kent_fitting_note *note, kent_fitting *out, kent_port *ports,
                      kent_complaints *complaints)
@@ -347,9 +397,11 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
         .m = m, .point = point, .note = note, .complaints = complaints, .ports = ports};
     read_site(l, &site);
     order_legs(&site);
+    if (!settle_branch(&site)) return false;
     const int type = settle_type(&site);
     if (type == NO_FITTING) return false;
-    if (site.count > KENT_ARMS) {
+    if (site.count > KENT_ARMS ||
+        (site.count == KENT_ARMS && note && note->branch.end != KENT_BRANCH_NONE)) {
         kent_place_complain(m, m->points[point].place, complaints,
                             "point \"%s\": %zu legs meet there; a fitting has at most "
                             "%d, so spread them over several points",
@@ -366,10 +418,17 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                           .curve_radius = (double)NAN,
                           .curve_length = (double)NAN,
                           .zone = zone_of(m, l, point),
+                          .role = note ? note->role : KENT_ROLE_NONE,
+                          .branch = site.branch,
                           .port_count = site.count,
                           .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
-    describe_legs(out, ports);
+    describe_legs(out, ports, site.count);
+    if (site.branch.end != KENT_BRANCH_NONE) {
+        if (site.count == 2) out->angle = branch_angle_of(&site);
+        if (kent_branch_port(&site.branch, &ports[site.count])) out->port_count++;
+        caution_cap(&site);
+    }
     describe_ground(m, note, out);
     /* A bend named as one is a casting; one found by its small turn is a joint. */
     out->within_deflection = type == KENT_BEND && !(note && note->type >= 0) &&
@@ -445,7 +504,7 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
     const kent_fitting_type type = note->type >= 0
                                        ? (kent_fitting_type)note->type
                                        : type_of_ports(ports, note->port_count);
-    if (!type_fits(type, note->port_count)) {
+    if (!type_fits(type, note->port_count, 0)) {
         kent_place_complain(m, note->place, complaints,
                             "fitting \"%s\": a %s does not have %zu port%s", note->id,
                             kent_fitting_type_word(type), note->port_count,
@@ -461,10 +520,11 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
                           .curve_radius = nan,
                           .curve_length = nan,
                           .zone = -1,
+                          .role = note->role,
                           .port_count = note->port_count,
                           .place = note->place};
     (void)snprintf(out->id, sizeof out->id, "%s", note->id);
-    describe_legs(out, ports);
+    describe_legs(out, ports, note->port_count);
     describe_ground(m, note, out);
     out->restraint = note->restraint >= 0 ? (kent_restraint_choice)note->restraint
                                           : usual_restraint(out, false);

@@ -40,6 +40,7 @@ typedef struct kent_point {
     double curve_radius;  /* m, of the arc that the pipe follows here; NAN: none */
     int soil;             /* -1: the ground's */
     bool record;          /* its history is wanted */
+    bool laid_out;        /* derived: x, y are worked out from stations and turns */
     kent_place place;
 } kent_point;
 
@@ -458,7 +459,8 @@ typedef struct kent_fitting {
     double station;         /* m along its route; NAN: ports-only */
     bool within_deflection; /* a turn that the joint takes: listed, not restrained */
     kent_role role;
-    kent_branch branch;  /* one without a pipe: "branch extended"; end NONE: none */
+    kent_branch branch;  /* one without a pipe, direction and bore settled; a blank or
+                            valve on a joint that holds has no port. end NONE: none */
     double curve_radius; /* m, of a curve; NAN */
     double curve_length; /* m along a curve; NAN */
     size_t member_first, member_count;     /* of a group, into kent_model.members */

@@ -114,6 +114,18 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
                              kent_fitting *out, kent_port *ports,
                              kent_complaints *complaints);
 
+/* kent_branch.c: what branches off without a pipe, and what a fitting serves. legs:
+ * of pipes; each returns false with a complaint. */
+bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
+                        kent_device device, size_t legs, kent_complaints *complaints);
+/* Unit, out of the fitting; ports [legs] have their directions. surveyed: x and y are
+ * the case's own, so that the branch's direction can be stated in them. */
+bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,
+                        const kent_port *ports, size_t legs, bool surveyed,
+                        kent_vec3 *out, kent_complaints *complaints);
+/* Its port. False: as built it has none, since its end is one body with the fitting. */
+bool kent_branch_port(const kent_branch *branch, kent_port *out);
+
 /* kent_fitting_list.c: all of them, in the order of kent_model.fittings. */
 kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
                               kent_complaints *complaints);
