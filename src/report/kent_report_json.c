@@ -312,6 +312,7 @@ static json_t *block_of(const kent_holding *h)
     set(&o, "height_m", real(none ? NAN : b->height));
     set(&o, "thickness_m", real(none ? NAN : b->thickness));
     set(&o, "volume_m3", real(none ? NAN : b->volume));
+    set(&o, "allowable_bearing_Pa", real(h->allowable_bearing));
     set(&o, "bearing_pressure_Pa", real(none ? NAN : b->bearing_pressure));
     set(&o, "utilisation", real(none ? NAN : b->utilisation));
     set(&o, "face", none ? json_null() : face_of(b));

@@ -50,6 +50,22 @@ kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rule
     };
 }
 
+void kent_site_bear(kent_site *site, const kent_rules *rules)
+{
+    const kent_bearing_place at = kent_site_place(site, rules);
+    const kent_soil *soil = site->soil;
+
+    site->allowable = NAN;
+    site->vertical = NAN;
+    site->gap = KENT_BEARING_KNOWN;
+    if (!soil) return;
+    site->allowable = kent_soil_bearing(soil, &at, &site->gap);
+    site->vertical = soil->vertical_bearing;
+    if (isnan(site->vertical) && soil->route == KENT_BEARING_CONSTANT) {
+        site->vertical = soil->allowable_bearing;
+    }
+}
+
 /* source docs/theory/10-blocks.md, 10.12. A depth that is not known (NAN) counts as
  * under water where there is any. */
 double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth)
@@ -81,6 +97,7 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
     out->bearing_area = sideways / site->allowable;
     if (isnan(site->cover)) return KENT_FAULT_COVER_UNSTATED;
     if (site->cover < rules->least_cover - COVER_SLACK) return KENT_FAULT_SHALLOW;
+    if (!(site->allowable > 0.0)) return KENT_FAULT_BEARING;
     if (!kent_face_choose(rules, out->bearing_area + site->hole, limit, &out->face)) {
         return KENT_FAULT_FACE;
     }
@@ -91,7 +108,6 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
 double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,
                               double sideways)
 {
-    const double area = sideways / site->allowable + site->hole;
     const int tries = (int)(DEEPEST / rules->side_step);
     kent_site deeper = *site;
     kent_face face = {0};
@@ -99,8 +115,11 @@ double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,
     for (int k = 1; k <= tries; k++) { /* up to a multiple of a step */
         deeper.cover = kent_side_up(site->cover, rules->side_step) +
                        (double)(k - 1) * rules->side_step;
+        kent_site_bear(&deeper, rules);
+        const double area = sideways / deeper.allowable + deeper.hole;
         const double limit = kent_face_height_limit(rules, kent_site_axis(&deeper));
         if (deeper.cover < rules->least_cover - COVER_SLACK) continue;
+        if (!(deeper.allowable > 0.0)) continue;
         if (kent_face_choose(rules, area, limit, &face)) return deeper.cover;
     }
     return NAN;
@@ -232,6 +251,7 @@ kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
     kent_fault fault = KENT_FAULT_NONE;
 
     *out = kent_block_none();
+    if (down > 0.0 && isnan(site->vertical)) return KENT_FAULT_VERTICAL;
     if (sideways > 0.0) {
         fault = face_size(rules, site, sideways, out);
         if (fault != KENT_FAULT_NONE) return fault;

@@ -104,8 +104,7 @@ static void derive_face(const kent_holding_work *w, kent_holding *h)
 
     kent_derivation_heading(d, "Face for the sideways thrust");
     derive_depth(w, h);
-    kent_derivation_put(d, "q", q, KENT_STRESS, kent_soil_source(w->soil),
-                        "allowable bearing of the soil");
+    kent_bearing_derive(w, d);
     kent_derivation_work(d, "Aq", load / q, KENT_AREA, "Fh/q", "10.4",
                          "bearing area asked for");
     if (hole) {

@@ -12,9 +12,11 @@ typedef struct kent_site { /* what a block stands in; m, Pa */
     double diameter;       /* outside, of the largest pipe */
     double cover;          /* ground to crown; NAN: not stated */
     double water_table;    /* below ground; INFINITY: none */
-    double allowable;      /* on a face */
-    double vertical;       /* under a base */
+    double allowable;      /* on a face at this depth; NAN: not known, as gap says */
+    double vertical;       /* under a base; NAN: not stated */
     double hole;           /* m2 of a face that the pipe passes through; 0: none */
+    const kent_soil *soil; /* NULL: not stated */
+    kent_bearing_gap gap;
 } kent_site;
 
 /* Factored loads by sense, N; parts that are negligible are 0. */
@@ -25,9 +27,11 @@ typedef struct kent_demand {
 typedef enum kent_fault {
     KENT_FAULT_NONE,
     KENT_FAULT_COVER_UNSTATED,
-    KENT_FAULT_SHALLOW, /* less cover than the rules' least */
-    KENT_FAULT_FACE,    /* no face of the asked area at this depth */
-    KENT_FAULT_VOLUME,  /* larger than the rules let be sized */
+    KENT_FAULT_SHALLOW,  /* less cover than the rules' least */
+    KENT_FAULT_BEARING,  /* the soil's bearing is not known at this depth */
+    KENT_FAULT_FACE,     /* no face of the asked area at this depth */
+    KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
+    KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
     KENT_FAULT_SOIL_UNSTATED,
     KENT_FAULT_SOIL /* peat, fill: nothing may count on it */
 } kent_fault;
@@ -38,6 +42,9 @@ double kent_site_axis(const kent_site *site); /* m below ground */
 
 /* Where a face centred on the pipe stands. */
 kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules);
+
+/* Works out allowable, vertical and gap from the site's soil and depth. */
+void kent_site_bear(kent_site *site, const kent_rules *rules);
 
 /* N/m3 of concrete whose base lies at depth (m): buoyed where any of it is under water.
  */

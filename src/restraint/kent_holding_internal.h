@@ -39,6 +39,7 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h);
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 
 /* Parts of the hand calculation; all add to h's derivation. */
+void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d); /* puts q */
 void kent_block_derive(const kent_holding_work *w, kent_holding *h);
 void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg);
 

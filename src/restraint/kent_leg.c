@@ -41,9 +41,26 @@ const kent_leg_rule *kent_leg_rule_of(const kent_fitting *fitting)
     return &RULES[i];
 }
 
+/* Whether it bears at some depth. */
+static bool soil_bears(const kent_soil *soil)
+{
+    switch (soil->route) {
+    case KENT_BEARING_CONSTANT:
+        return soil->allowable_bearing > 0.0;
+    case KENT_BEARING_BY_DEPTH:
+        return soil->by_depth_count > 0 &&
+               soil->by_depth[soil->by_depth_count - 1].bearing > 0.0;
+    case KENT_BEARING_GRADIENT:
+        return soil->bearing_gradient > 0.0;
+    case KENT_BEARING_PASSIVE:
+        return soil->passive_share > 0.0;
+    }
+    return false;
+}
+
 bool kent_soil_counts(const kent_soil *soil)
 {
-    return soil != NULL && !soil->unreliable && soil->allowable_bearing > 0.0;
+    return soil != NULL && !soil->unreliable && soil_bears(soil);
 }
 
 const kent_soil *kent_point_soil(const kent_model *m, int point)

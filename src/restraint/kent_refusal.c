@@ -91,6 +91,39 @@ static void refuse_soil(const kent_holding_work *w, kent_text *t)
     kent_text_add(t, "%ssupport the fitting on piles", sep[0] == ' ' ? ", or " : "");
 }
 
+/* Why the soil's bearing is not known here, and what would tell it. */
+static void refuse_bearing(const kent_holding_work *w, kent_text *t)
+{
+    const kent_soil *s = w->soil;
+    const kent_system units = w->m->units;
+    const double axis = kent_site_axis(&w->site);
+
+    switch (w->site.gap) {
+    case KENT_BEARING_KNOWN:
+        kent_text_add(t,
+                      "no block: soil '%s' bears nothing at a depth of %s; lay the "
+                      "main deeper, or ",
+                      s->id, kent_said_of(KENT_LENGTH, units, axis).s);
+        return;
+    case KENT_BEARING_NO_DEPTH: /* no cover: another fault, before this one */
+        break;
+    case KENT_BEARING_ABOVE_TABLE:
+        kent_text_add(t,
+                      "no block: the bearing of soil '%s' is given from %s down, and "
+                      "the centre of the face lies at %s; lay the main deeper, state "
+                      "what the soil bears there, or ",
+                      s->id, kent_said_of(KENT_LENGTH, units, s->by_depth[0].depth).s,
+                      kent_said_of(KENT_LENGTH, units, axis).s);
+        return;
+    case KENT_BEARING_LACKS:
+        kent_text_add(t,
+                      "no block: the passive pressure of soil '%s' wants unit_weight, "
+                      "friction_angle and cohesion; give all three, or ",
+                      s->id);
+        return;
+    }
+}
+
 static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          kent_text *t)
 {
@@ -114,6 +147,16 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                       "main that deep, or ",
                       kent_said_of(KENT_LENGTH, units, w->site.cover).s,
                       kent_said_of(KENT_LENGTH, units, rules->least_cover).s);
+        break;
+    case KENT_FAULT_BEARING:
+        refuse_bearing(w, t);
+        break;
+    case KENT_FAULT_VERTICAL:
+        kent_text_add(t,
+                      "no block: it would stand on soil '%s', whose bearing under a "
+                      "base is not stated, and one that goes with depth is for faces; "
+                      "give vertical_bearing, or ",
+                      w->soil->id);
         break;
     case KENT_FAULT_VOLUME:
         kent_text_add(t,

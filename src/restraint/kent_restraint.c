@@ -6,7 +6,8 @@
 
 static const double PI = 3.14159265358979323846;
 
-static kent_site site_of(const kent_fitting *f, const kent_soil *soil)
+static kent_site site_of(const kent_fitting *f, const kent_soil *soil,
+                         const kent_rules *rules)
 {
     const bool through =
         f->type == KENT_REDUCER || (f->type == KENT_VALVE && f->port_count >= 2);
@@ -15,16 +16,11 @@ static kent_site site_of(const kent_fitting *f, const kent_soil *soil)
         .diameter = od,
         .cover = f->cover,
         .water_table = isnan(f->water_table) ? INFINITY : f->water_table,
-        .allowable = NAN,
-        .vertical = NAN,
         .hole = through ? 0.25 * PI * od * od : 0.0,
+        .soil = soil,
     };
 
-    if (soil) {
-        site.allowable = soil->allowable_bearing;
-        site.vertical =
-            isnan(soil->vertical_bearing) ? site.allowable : soil->vertical_bearing;
-    }
+    kent_site_bear(&site, rules);
     return site;
 }
 
@@ -51,6 +47,7 @@ static void holding_start(kent_holding *h, const kent_fitting *f)
         .design_thrust = NAN,
         .factor_asked = NAN,
         .block = kent_block_none(),
+        .allowable_bearing = NAN,
         .factor_reached = NAN,
         .utilisation = NAN,
         .restrained_length = NAN,
@@ -102,9 +99,10 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             .loads = &loads->fittings[i],
             .standings = &standings,
             .soil = soil,
-            .site = site_of(&fitting, soil),
+            .site = site_of(&fitting, soil, &m->rules),
         };
         holding_start(h, &fitting);
+        if (kent_soil_counts(soil)) h->allowable_bearing = work.site.allowable;
         status = holding_work_out(&work, h, err);
         if (status != KENT_OK) {
             r->fitting_count++; /* this one holds notes too */

@@ -108,6 +108,7 @@ typedef struct kent_holding {
     double design_thrust; /* N, factored, of the governing case and sense */
     double factor_asked, factor_reached, utilisation; /* NAN where not held */
     kent_block block;
+    double allowable_bearing; /* Pa, of a face at this depth; NAN: none, or not known */
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */
