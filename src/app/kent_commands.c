@@ -312,10 +312,10 @@ static kent_exit command_check(session *s)
     kent_exit code = read_case(s);
     if (code) return code;
     const kent_report_options o = report_options(s);
-    steadies = kent_alloc(s->model->state_count, sizeof *steadies);
+    steadies = kent_alloc(s->model->state_count, sizeof(kent_steady *));
     if (!steadies) return fail(s, kent_error_nomem(&s->error));
     if (s->model->span_count > 0) {
-        solved = kent_steady_solve(s->model, &steadies[0], &s->error);
+        solved = kent_steady_solve_states(s->model, steadies, &s->error);
     }
     const kent_status status =
         kent_report_check(s->model, steadies, &o, kent_output_gather(&text));
@@ -326,8 +326,7 @@ static kent_exit command_check(session *s)
         code = print_report(s, status, &text);
     }
     kent_text_clear(&text);
-    kent_steady_free(steadies[0]);
-    free(steadies);
+    kent_steady_free_states(steadies, s->model->state_count);
     return code;
 }
 

@@ -3,10 +3,11 @@
 #include "kent_limits.h"
 #include "kent_scenario_run.h"
 
+#include <assert.h>
 #include <stdlib.h>
 #include <unistd.h>
 
-/* The two grids of a scenario: as planned, and with every reach halved. */
+/* The two grids of a march: as planned, and with every reach halved. */
 enum { COARSE, FINE, GRIDS };
 
 typedef struct kent_march_plan {
@@ -15,6 +16,7 @@ typedef struct kent_march_plan {
     kent_recorder *recorder;
     kent_viewpoints *views;
     kent_grid *grid[GRIDS];       /* FINE: NULL without a grid check */
+    int *marches;                 /* [scenario_count] of the model's, by result */
     kent_scenario_result *coarse; /* [scenario_count], peaks only */
     kent_error *errors;           /* [jobs] */
     kent_status *statuses;        /* [jobs] */
@@ -25,7 +27,7 @@ static size_t plan_grids(const kent_march_plan *plan)
     return plan->grid[FINE] ? 2 : 1;
 }
 
-/* Job 2 i (or i) is scenario i on the grid whose figures are printed; the long job
+/* Job 2 i (or i) is march i on the grid whose figures are printed; the long job
  * comes first so that threads end together. */
 static void march_job(void *context, size_t index)
 {
@@ -35,11 +37,10 @@ static void march_job(void *context, size_t index)
     kent_scenario_result *out =
         printed ? &plan->results->scenarios[i] : &plan->coarse[i];
     const kent_scenario_run run = {
-        .model = plan->model,
-        .steady = plan->results->steady,
+        .steady = plan->results->steadies[plan->results->scenarios[i].state],
         .views = plan->views,
         .grid = plan->grid[printed && grids == 2 ? FINE : COARSE],
-        .scenario = plan->results->scenarios[i].scenario,
+        .march = plan->marches[i],
         .recorder = printed ? plan->recorder : NULL,
     };
     plan->statuses[index] = kent_scenario_run_march(&run, out, &plan->errors[index]);
@@ -116,6 +117,7 @@ static void plan_clear(kent_march_plan *plan)
     for (size_t i = 0; plan->coarse && i < plan->results->scenario_count; i++) {
         kent_scenario_result_clear(&plan->coarse[i], plan->model->span_count);
     }
+    free(plan->marches);
     free(plan->coarse);
     free(plan->errors);
     free(plan->statuses);
@@ -125,20 +127,38 @@ static void plan_clear(kent_march_plan *plan)
     kent_recorder_free(plan->recorder);
 }
 
-static kent_status choose_scenarios(const kent_model *m,
-                                    const kent_job_options *options, kent_results *r,
-                                    kent_error *err)
+/* Marches of the scenarios asked for: in the order asked, and by state. */
+static kent_status choose_marches(kent_march_plan *plan,
+                                  const kent_job_options *options, kent_error *err)
 {
+    const kent_model *m = plan->model;
+    kent_results *r = plan->results;
     const bool all = options->scenarios == NULL;
-    const size_t count = all ? m->scenario_count : options->scenario_count;
-    r->scenarios = kent_alloc(count, sizeof *r->scenarios);
-    if (!r->scenarios) return kent_error_nomem(err);
-    for (size_t i = 0; i < count; i++) {
-        r->scenarios[i].scenario = all ? (int)i : options->scenarios[i];
-        r->scenarios[i].uncertainty = NAN;
+    const size_t asked = all ? m->scenario_count : options->scenario_count;
+    r->scenarios = kent_alloc(m->march_count, sizeof *r->scenarios);
+    plan->marches = kent_alloc(m->march_count, sizeof *plan->marches);
+    if (!r->scenarios || !plan->marches) return kent_error_nomem(err);
+    for (size_t i = 0; i < asked; i++) {
+        const int scenario = all ? (int)i : options->scenarios[i];
+        for (size_t k = 0; k < m->march_count; k++) {
+            if (m->marches[k].scenario != scenario) continue;
+            assert(r->scenario_count < m->march_count);
+            kent_scenario_result *out = &r->scenarios[r->scenario_count];
+            plan->marches[r->scenario_count++] = (int)k;
+            out->scenario = scenario;
+            out->uncertainty = NAN;
+            out->state = m->marches[k].state;
+        }
     }
-    r->scenario_count = count;
     return KENT_OK;
+}
+
+static kent_status solve_states(const kent_model *m, kent_results *r, kent_error *err)
+{
+    r->steadies = kent_alloc(m->state_count, sizeof(kent_steady *));
+    if (!r->steadies) return kent_error_nomem(err);
+    r->steady_count = m->state_count;
+    return kent_steady_solve_states(m, r->steadies, err);
 }
 
 static kent_status name_histories(const kent_viewpoints *v, kent_results *r,
@@ -180,9 +200,11 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     kent_march_plan plan = {.model = m, .results = r};
 
     copy_notes(&m->cautions, &r->cautions);
-    kent_status status = choose_scenarios(m, options, r, err);
-    if (!status) status = kent_steady_solve(m, &r->steady, err);
-    if (!status) status = kent_recorder_new(m, r->steady, &plan.recorder, err);
+    kent_status status = choose_marches(&plan, options, err);
+    if (!status) status = solve_states(m, r, err);
+    if (!status) {
+        status = kent_recorder_new(m, r->steadies, &plan.recorder, err);
+    }
     if (!status) status = kent_viewpoints_new(m, plan.recorder, &plan.views, err);
     if (!status) status = name_histories(plan.views, r, err);
     if (!status && r->scenario_count > 0) {

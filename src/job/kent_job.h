@@ -5,19 +5,19 @@
 #include "kent_restraint.h"
 #include "kent_steady.h"
 
-typedef struct kent_peak {           /* of one point in one scenario */
+typedef struct kent_peak {           /* of one point in one march */
     double highest_head, highest_at; /* m, s */
     double lowest_head, lowest_at;
 } kent_peak;
 
-typedef struct kent_history { /* every watched place of a scenario, thinned */
+typedef struct kent_history { /* every watched place of a march, thinned */
     size_t rows, watch_count;
     double *time;        /* [rows] s */
     double *head, *flow; /* [rows][watch_count] m, m3/s */
 } kent_history;
 
-typedef struct kent_scenario_result {
-    int scenario;
+typedef struct kent_scenario_result { /* of one march */
+    int scenario, state;
     double step; /* s */
     size_t steps;
     double uncertainty; /* m: whole difference between the two grids; NAN: one grid */
@@ -31,9 +31,10 @@ typedef struct kent_scenario_result {
 
 typedef struct kent_results {
     const kent_model *model; /* the caller's; must outlive the results */
-    kent_steady *steady;
-    kent_scenario_result
-        *scenarios; /* [scenario_count], those asked for, in case order */
+    kent_steady **steadies;  /* [steady_count], by state */
+    size_t steady_count;
+    kent_scenario_result *scenarios; /* [scenario_count] marches of those asked for, in
+                                        the order asked, by state */
     size_t scenario_count;
     int *history_points; /* [history_count] points whose history is kept */
     size_t history_count;
@@ -45,7 +46,8 @@ typedef struct kent_results {
 } kent_results;
 
 typedef struct kent_job_options {
-    const int *scenarios; /* [scenario_count] to run; NULL: all */
+    const int *scenarios; /* [scenario_count] to run, each once, from all its states;
+                             NULL: all */
     size_t scenario_count;
     unsigned threads; /* 0: as many as there are processors */
 } kent_job_options;

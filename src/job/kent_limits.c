@@ -5,6 +5,11 @@
 /* A peak in the last 2 % of the duration may not be the last word. */
 static const double LATE_SHARE = 0.02;
 
+static kent_name name_of(const kent_model *m, const kent_scenario_result *run)
+{
+    return kent_name_in_state(m, m->scenarios[run->scenario].id, run->state);
+}
+
 /* Pa gauge at a grid point of a span whose head is given. */
 static double pressure_on_span(const kent_model *m, int span, int reaches, int node,
                                double head)
@@ -51,7 +56,7 @@ static void judge_rating(kent_results *r, const kent_scenario_result *run)
     for (size_t i = 0; i < m->span_count; i++) {
         double chainage = 0.0;
         const double reached = highest_on_span(r, run, (int)i, &chainage);
-        judge_pressure(r, (int)i, reached, chainage, m->scenarios[run->scenario].id);
+        judge_pressure(r, (int)i, reached, chainage, name_of(m, run).s);
     }
 }
 
@@ -88,7 +93,7 @@ static void caution_touched(kent_results *r, const kent_scenario_result *run)
         kent_notes_add(cautions,
                        "%s: the pressure falls below the vapour limit at or next to "
                        "it; what follows is not to be relied on",
-                       m->scenarios[run->scenario].id);
+                       name_of(m, run).s);
         r->cautions.failed = r->cautions.failed || cautions->failed;
     }
 }
@@ -110,7 +115,7 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
         "%s: the pressure falls below the vapour limit at or next to %s; this "
         "version has no cavity model, so pressures after that instant are not to "
         "be relied on there",
-        m->scenarios[run->scenario].id, kent_text_of(&where));
+        name_of(m, run).s, kent_text_of(&where));
     kent_text_clear(&where);
     r->limit_exceeded = true;
     caution_touched(r, run);
@@ -135,8 +140,8 @@ static void judge_lateness(kent_results *r, const kent_scenario_result *run)
     if (peak->highest_at < late || swing < 1e-6) return;
     kent_notes_add(
         &r->cautions,
-        "%s: the highest head (at %s) comes at %.1f s of %.1f s: run it longer", s->id,
-        m->points[highest].id, peak->highest_at, s->duration);
+        "%s: the highest head (at %s) comes at %.1f s of %.1f s: run it longer",
+        name_of(m, run).s, m->points[highest].id, peak->highest_at, s->duration);
 }
 
 static void judge_grid(kent_results *r, const kent_scenario_result *run)

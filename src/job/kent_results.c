@@ -12,7 +12,7 @@ void kent_results_free(kent_results *r)
     free(r->history_points);
     kent_restraints_free(r->restraints);
     kent_loads_free(r->loads);
-    kent_steady_free(r->steady);
+    kent_steady_free_states(r->steadies, r->steady_count);
     kent_notes_clear(&r->cautions);
     free(r);
 }

@@ -51,14 +51,14 @@ static void take_trace(const kent_scenario_run *run, const kent_trace *trace,
         take_peaks(v, trace->time[n], head, out->points);
         if (keeper) take_history(v, keeper, trace->time[n], head, flow, room);
     }
-    if (run->recorder) kent_recorder_take(run->recorder, run->scenario, trace);
+    if (run->recorder) kent_recorder_take(run->recorder, run->march, trace);
 }
 
 static kent_status take_envelopes(const kent_scenario_run *run,
                                   const kent_marcher *march, kent_scenario_result *out,
                                   kent_error *err)
 {
-    const kent_model *m = run->model;
+    const kent_model *m = run->steady->model;
     out->highest = kent_alloc(m->span_count, sizeof *out->highest);
     out->lowest = kent_alloc(m->span_count, sizeof *out->lowest);
     out->touched = kent_alloc(m->point_count, sizeof *out->touched);
@@ -77,9 +77,10 @@ static kent_status take_envelopes(const kent_scenario_run *run,
 kent_status kent_scenario_run_march(const kent_scenario_run *run,
                                     kent_scenario_result *out, kent_error *err)
 {
-    const kent_model *m = run->model;
+    const kent_model *m = run->steady->model;
     const kent_viewpoints *v = run->views;
-    const double duration = m->scenarios[run->scenario].duration;
+    const kent_march it = m->marches[run->march];
+    const double duration = m->scenarios[it.scenario].duration;
     const double step = run->grid->step;
     const size_t instants = (size_t)ceil(duration / step - 1e-9) + 1;
     kent_marcher *march = NULL;
@@ -87,7 +88,8 @@ kent_status kent_scenario_run_march(const kent_scenario_run *run,
     double *room = kent_alloc(2 * v->history_count, sizeof *room);
     kent_status status = KENT_OK;
 
-    out->scenario = run->scenario;
+    out->scenario = it.scenario;
+    out->state = it.state;
     out->step = step;
     out->steps = instants - 1;
     out->points = kent_alloc(m->point_count, sizeof *out->points);
@@ -98,11 +100,11 @@ kent_status kent_scenario_run_march(const kent_scenario_run *run,
     for (size_t i = 0; i < m->point_count; i++) {
         out->points[i] = nothing_seen();
     }
-    status = kent_marcher_new(m, run->steady, run->grid, run->scenario, v->watches,
+    status = kent_marcher_new(m, run->steady, run->grid, it.scenario, v->watches,
                               v->recorder_count + v->count, BLOCK, &march, err);
     if (status) goto done;
     if (run->recorder) {
-        kent_recorder_start(run->recorder, run->scenario, step);
+        kent_recorder_start(run->recorder, run->march, step);
         status = kent_history_keeper_new(instants, (size_t)m->solver.history_rows,
                                          v->history_count, &keeper, err);
         if (status) goto done;

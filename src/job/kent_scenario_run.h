@@ -1,4 +1,5 @@
-/* One scenario marched once, on one grid, into peaks, envelopes and histories. */
+/* A scenario marched once from one state, on one grid, into peaks, envelopes and
+ * histories. */
 #ifndef KENT_SCENARIO_RUN_H
 #define KENT_SCENARIO_RUN_H
 
@@ -6,11 +7,10 @@
 #include "kent_viewpoint.h"
 
 typedef struct kent_scenario_run {
-    const kent_model *model;
-    const kent_steady *steady;
+    const kent_steady *steady; /* of its state: marched on that one's model */
     const kent_viewpoints *views;
     const kent_grid *grid;
-    int scenario;
+    int march;               /* index into the model's marches */
     kent_recorder *recorder; /* NULL: peaks only */
 } kent_scenario_run;
 

@@ -594,6 +594,13 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints);
 kent_model *kent_model_in_state(const kent_model *m, int state, const double *capacity);
 void kent_model_view_free(kent_model *view);
 
+/* What something is called in a state: "shut-16s (low)"; in a case of one state, or of
+ * none in particular (-1), its name alone. */
+typedef struct kent_name {
+    char s[2 * KENT_ID + 20];
+} kent_name;
+kent_name kent_name_in_state(const kent_model *m, const char *name, int state);
+
 /* Whether indices are in range, spans and nodes fit each other, and every SI value that
  * must be positive is. For assertions and tests. */
 bool kent_model_is_valid(const kent_model *m);

@@ -105,6 +105,17 @@ kent_model *kent_model_in_state(const kent_model *m, int state, const double *ca
     return view;
 }
 
+kent_name kent_name_in_state(const kent_model *m, const char *name, int state)
+{
+    kent_name out;
+    if (state < 0 || m->state_count < 2) {
+        (void)snprintf(out.s, sizeof out.s, "%s", name);
+    } else {
+        (void)snprintf(out.s, sizeof out.s, "%s (%s)", name, m->states[state].id);
+    }
+    return out;
+}
+
 void kent_model_view_free(kent_model *view)
 {
     if (!view) return;

@@ -66,7 +66,7 @@ static void add_profile_rows(const kent_results *r, size_t scenario, size_t inde
         const double numbers[] = {
             m->chainage[span->route_first] + x,
             kent_span_level(m, span, x),
-            kent_steady_head(m, r->steady, (int)index, x),
+            kent_steady_head(m, r->steadies[s->state], (int)index, x),
             s->highest[index][k],
             s->lowest[index][k],
         };

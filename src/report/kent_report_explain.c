@@ -169,7 +169,7 @@ static void case_row(const kent_sheet *s, size_t i, kent_table *t)
         at->set ? kent_instant_lasting(at) : (kent_vec3){NAN, NAN, NAN};
     const double whole = kent_vec3_length(thrust);
     const double numbers[] = {thrust.x, thrust.y, thrust.z, whole};
-    kent_table_cell(t, "%s%s", c->name, governs ? " *" : "");
+    kent_table_cell(t, "%s%s", c->title.s, governs ? " *" : "");
     kent_table_cell(t, "%s", kent_shown_number(at->set ? at->time : NAN, 2).text);
     kent_table_cell(
         t, "%s",
@@ -282,10 +282,10 @@ static void print_case_arithmetic(const kent_sheet *s)
         const kent_load_case *c = &s->loads->cases[i];
         const kent_instant *at = &c->worst[KENT_RESULTANT];
         const kent_symbol factor = case_symbol("SF", i), force = case_symbol("T", i);
-        char words[96];
+        char words[160];
         if (!at->set) continue;
         (void)snprintf(words, sizeof words, "Case %s: %s", case_symbol("", i).text + 1,
-                       c->name);
+                       c->title.s);
         kent_derivation_heading(&d, words);
         derive_case_pressure(s, c, i, &d);
         const double thrust = kent_vec3_length(kent_instant_lasting(at));
@@ -310,7 +310,7 @@ static void print_runner_up(const kent_sheet *s)
     kent_text words = {0};
     if (h->governing < 0 || h->runner_up < 0) return;
     kent_text_add(&words, "Runner-up: %s, %s factored",
-                  s->loads->cases[h->runner_up].name,
+                  s->loads->cases[h->runner_up].title.s,
                   kent_shown_with_unit(KENT_FORCE, s->units, h->runner_up_load).text);
     if (h->design_thrust > 0.0) {
         kent_text_add(&words, ", %.0f %% of what governs",
@@ -364,7 +364,7 @@ static void print_outcome(const kent_sheet *s)
         add_part(s, p, &words);
         if (isfinite(p->factor_reached) && p->governing >= 0) {
             kent_text_add(&words, ", against %s; factor reached %.2f, asked %.2f; ",
-                          s->loads->cases[p->governing].name, p->factor_reached,
+                          s->loads->cases[p->governing].title.s, p->factor_reached,
                           s->loads->cases[p->governing].safety_factor);
             kent_text_add(&words, "load over resistance %.2f", p->utilisation);
         }

@@ -176,10 +176,10 @@ static json_t *steady_point(const kent_model *m, size_t point, double head)
     return object_done(o);
 }
 
-static json_t *steady_pipe(const kent_results *r, size_t index)
+static json_t *steady_pipe(const kent_results *r, const kent_steady *s, size_t index)
 {
     const kent_span *span = &r->model->spans[index];
-    const double flow = r->steady->span_flow[index];
+    const double flow = s->span_flow[index];
     const kent_grid *grid = r->scenario_count > 0 ? r->scenarios[0].grid : NULL;
     kent_object o = object_new();
     set(&o, "id", words(span->id));
@@ -191,29 +191,36 @@ static json_t *steady_pipe(const kent_results *r, size_t index)
     return object_done(o);
 }
 
+/* head: room for the points' heads. */
+static void put_state(kent_writer *w, size_t state, double *head)
+{
+    const kent_model *m = w->model;
+    const kent_steady *s = w->results->steadies[state];
+    kent_point_steady_heads(m, s, head);
+    put_text(w, state > 0 ? ",\n{\"state\": " : "\n{\"state\": ");
+    put_value(w, words(m->states[state].id));
+    open_list(w, ", \"points\": [");
+    for (size_t i = 0; i < m->point_count; i++) {
+        put_element(w, steady_point(m, i, head[i]));
+    }
+    open_list(w, "],\n\"pipes\": [");
+    for (size_t i = 0; i < m->span_count; i++) {
+        put_element(w, steady_pipe(w->results, s, i));
+    }
+    put_text(w, "]}");
+}
+
 static void put_steady(kent_writer *w)
 {
     const kent_model *m = w->model;
-    const kent_steady *s = w->results->steady;
     double *head = kent_alloc(m->point_count, sizeof *head);
     if (!head) {
         w->status = KENT_E_NOMEM;
         return;
     }
     put_text(w, ",\n\"steady\": [");
-    if (m->span_count > 0) {
-        kent_point_steady_heads(m, s, head);
-        put_text(w, "\n{\"state\": ");
-        put_value(w, words(s->id));
-        open_list(w, ", \"points\": [");
-        for (size_t i = 0; i < m->point_count; i++) {
-            put_element(w, steady_point(m, i, head[i]));
-        }
-        open_list(w, "],\n\"pipes\": [");
-        for (size_t i = 0; i < m->span_count; i++) {
-            put_element(w, steady_pipe(w->results, i));
-        }
-        put_text(w, "]}");
+    for (size_t i = 0; m->span_count > 0 && i < w->results->steady_count; i++) {
+        put_state(w, i, head);
     }
     put_text(w, "]");
     free(head);
@@ -246,7 +253,7 @@ static void put_scenario(kent_writer *w, const kent_scenario_result *s)
     put_text(w, "\n{\"id\": ");
     put_value(w, words(m->scenarios[s->scenario].id));
     put_text(w, ", \"state\": ");
-    put_value(w, words(w->results->steady->id));
+    put_value(w, words(m->states[s->state].id));
     put_text(w, ", \"time_step_s\": ");
     put_value(w, real(s->step));
     put_text(w, ", \"time_steps\": ");
@@ -274,12 +281,19 @@ static void put_scenarios(kent_writer *w)
 
 /* ---- fittings -------------------------------------------------------------------- */
 
-static json_t *case_of(const kent_load_case *c)
+/* null: of no state in particular. */
+static json_t *state_of(const kent_model *m, const kent_load_case *c)
+{
+    return c && c->state >= 0 ? words(m->states[c->state].id) : json_null();
+}
+
+static json_t *case_of(const kent_model *m, const kent_load_case *c)
 {
     const kent_instant *at = &c->worst[KENT_RESULTANT];
     const kent_vec3 thrust = at->set ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
     kent_object o = object_new();
     set(&o, "name", words(c->name));
+    set(&o, "state", state_of(m, c));
     set(&o, "time_s", real(at->set ? at->time : NAN));
     set(&o, "pressure_Pa", real(at->set ? at->pressure : NAN));
     set(&o, "thrust_N", vector(thrust));
@@ -355,6 +369,16 @@ static json_t *legs_of(const kent_model *m, const kent_fitting *f,
     return object_done(list);
 }
 
+/* Of the governing case; of a case of no state in particular the only one there is. */
+static json_t *state_governing(const kent_results *r, size_t index,
+                               const kent_load_case *c)
+{
+    const kent_model *m = r->model;
+    const bool network = m->fittings[index].point >= 0 && m->span_count > 0;
+    if (network && m->state_count == 1) return words(m->states[0].id);
+    return state_of(m, c);
+}
+
 /* What governs and by how much. */
 static void set_governing(kent_object *o, const kent_results *r, size_t index)
 {
@@ -363,11 +387,10 @@ static void set_governing(kent_object *o, const kent_results *r, size_t index)
     const kent_holding *h = &r->restraints->fittings[index];
     const kent_instant *at = kent_shown_instant(loads, h);
     const kent_load_case *c = at ? &loads->cases[h->governing] : NULL;
-    const bool network = m->fittings[index].point >= 0;
     const kent_vec3 thrust = at ? at->balance.thrust : (kent_vec3){NAN, NAN, NAN};
     set(o, "load_case", c ? words(c->name) : json_null());
     set(o, "sense", c ? words(kent_shown_sense(h->sense)) : json_null());
-    set(o, "state", network && m->span_count > 0 ? words(r->steady->id) : json_null());
+    set(o, "state", state_governing(r, index, c));
     set(o, "scenario",
         c && c->scenario >= 0 ? words(m->scenarios[c->scenario].id) : json_null());
     set(o, "time_s", real(at ? at->time : NAN));
@@ -404,7 +427,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     set(&o, "station_m", real(f->station));
     set_governing(&o, r, index);
     for (size_t i = 0; i < loads->count; i++) {
-        append(&cases, case_of(&loads->cases[i]));
+        append(&cases, case_of(m, &loads->cases[i]));
     }
     set(&o, "load_cases", object_done(cases));
     set(&o, "restraint", words(kent_restraint_word(h->chosen)));

@@ -425,7 +425,7 @@ static void print_scenario(kent_page *page, size_t index)
     const kent_extreme high = kent_extreme_highest(page->results, index);
     const kent_extreme low = kent_extreme_lowest(page->results, index);
     kent_text words = {0};
-    kent_text_add(&words, "%s", given->id);
+    kent_text_add(&words, "%s", kent_name_in_state(m, given->id, s->state).s);
     if (given->title[0] != '\0' && strcmp(given->title, given->id) != 0) {
         kent_text_add(&words, ": %s", given->title);
     }

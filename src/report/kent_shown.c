@@ -279,7 +279,7 @@ kent_shown kent_shown_governing(const kent_fitting_loads *loads, const kent_part
 {
     const kent_instant *at = kent_part_instant(loads, part);
     if (!at) return shown(KENT_SHOWN_NONE);
-    const char *name = loads->cases[part->governing].name;
+    const char *name = loads->cases[part->governing].title.s;
     if (isnan(at->time) || room == KENT_TIGHTEST) return shown("%s", name);
     return shown(room == KENT_ROOMY ? "%s at %.1f s" : "%s %.1f s", name, at->time);
 }

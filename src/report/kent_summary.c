@@ -180,7 +180,7 @@ static void soil(const kent_row *r, kent_text *out)
 
 static void load_case(const kent_row *r, kent_text *out)
 {
-    if (r->governing) kent_text_add(out, "%s", r->governing->name);
+    if (r->governing) kent_text_add(out, "%s", r->governing->title.s);
 }
 
 static void sense(const kent_row *r, kent_text *out)
@@ -188,27 +188,34 @@ static void sense(const kent_row *r, kent_text *out)
     if (r->governing) kent_text_add(out, "%s", kent_shown_sense(r->holding->sense));
 }
 
-static void scenario_id(const kent_results *r, int scenario, kent_text *out)
+static void march_name(const kent_model *m, kent_march march, kent_text *out)
 {
-    if (scenario < 0) return;
-    kent_text_add(out, "%s", r->model->scenarios[scenario].id);
+    if (march.scenario < 0) return;
+    const char *id = m->scenarios[march.scenario].id;
+    kent_text_add(out, "%s", kent_name_in_state(m, id, march.state).s);
+}
+
+static void result_name(const kent_results *r, int index, kent_text *out)
+{
+    if (index < 0) return;
+    const kent_scenario_result *s = &r->scenarios[index];
+    march_name(r->model, (kent_march){s->scenario, s->state}, out);
 }
 
 static void scenario(const kent_row *r, kent_text *out)
 {
-    if (r->governing) scenario_id(r->results, r->governing->scenario, out);
+    const kent_load_case *c = r->governing;
+    if (c) march_name(r->results->model, (kent_march){c->scenario, c->state}, out);
 }
 
 static void highest_in(const kent_row *r, kent_text *out)
 {
-    const int i = r->pressures.highest_in;
-    if (i >= 0) scenario_id(r->results, r->results->scenarios[i].scenario, out);
+    result_name(r->results, r->pressures.highest_in, out);
 }
 
 static void lowest_in(const kent_row *r, kent_text *out)
 {
-    const int i = r->pressures.lowest_in;
-    if (i >= 0) scenario_id(r->results, r->results->scenarios[i].scenario, out);
+    result_name(r->results, r->pressures.lowest_in, out);
 }
 
 static void pushes(const kent_row *r, kent_text *out)
@@ -243,7 +250,7 @@ static void runner_up_case(const kent_row *r, kent_text *out)
 {
     const int i = r->holding->runner_up;
     if (i < 0 || (size_t)i >= r->loads->count) return;
-    kent_text_add(out, "%s", r->loads->cases[i].name);
+    kent_text_add(out, "%s", r->loads->cases[i].title.s);
 }
 
 /* What the pressure acts on at each port, in port order. */

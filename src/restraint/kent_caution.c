@@ -34,7 +34,7 @@ static void caution_test_pressure(const kent_holding_work *w, kent_holding *h)
     }
     if (!worst || !(highest > test * (1.0 + 1e-9))) return; /* NAN: no test case */
     kent_notes_add(&h->cautions, "'%s' reaches %s here, above the test pressure of %s",
-                   worst->name, kent_said_of(KENT_PRESSURE, units, highest).s,
+                   worst->title.s, kent_said_of(KENT_PRESSURE, units, highest).s,
                    kent_said_of(KENT_PRESSURE, units, test).s);
 }
 
@@ -51,8 +51,8 @@ static void caution_peak(const kent_holding_work *w, kent_holding *h)
     if (c->scenario < 0 || !peak_is_short(c)) return;
     kent_notes_add(
         &h->cautions,
-        "the governing peak is short: '%s' stays above 90 %% of it for %.3f s", c->name,
-        c->above_90_percent);
+        "the governing peak is short: '%s' stays above 90 %% of it for %.3f s",
+        c->title.s, c->above_90_percent);
 }
 
 /* Whether the ground can be as strong as its bearing says, at this depth. */
@@ -116,7 +116,7 @@ static void caution_reversal(const kent_holding_work *w, kent_holding *h)
         "'%s' also pulls the other way, with %s sideways before any factor: "
         "the face does not bear that way, so tie the fitting to a block that "
         "holds it",
-        worst->name, kent_said_of(KENT_FORCE, w->m->units, pull).s);
+        worst->title.s, kent_said_of(KENT_FORCE, w->m->units, pull).s);
 }
 
 static void caution_block(const kent_holding_work *w, kent_holding *h)

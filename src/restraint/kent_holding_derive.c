@@ -48,10 +48,10 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     const kent_balance *b = &c->worst[sense].balance;
     const double part = kent_holding_part(c, sense);
     const bool changing = kent_vec3_length(b->unsteady) > 0.0;
-    char says[120];
+    char says[160];
 
     (void)snprintf(says, sizeof says, "Factored load: %s, case '%s'", word->says,
-                   c->name);
+                   c->title.s);
     kent_derivation_heading(d, says);
     if (derivation_has(d, b->thrust)) {
         (void)snprintf(says, sizeof says, "%s%s", word->says,
@@ -67,7 +67,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
                          word->formula_factored, "10.11", "factored load");
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
-                   w->loads->cases[h->runner_up].name);
+                   w->loads->cases[h->runner_up].title.s);
     kent_derivation_put(d, "Fnext", h->runner_up_load, KENT_FORCE, KENT_COMPUTED, says);
 }
 

@@ -113,9 +113,9 @@ static void derive_length(const kent_holding_work *w, const kent_holding *h,
                           const kent_leg_work *k, kent_derivation *d)
 {
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
-    char says[120];
+    char says[160];
 
-    (void)snprintf(says, sizeof says, "whole thrust, case '%s'", c->name);
+    (void)snprintf(says, sizeof says, "whole thrust, case '%s'", c->title.s);
     kent_derivation_put(d, "T", kent_vec3_length(w->pull), KENT_FORCE, KENT_COMPUTED,
                         says);
     kent_derivation_put(d, "SF", k->factor, KENT_RATIO, kent_factor_source(w->m, c),

@@ -23,14 +23,23 @@ void kent_steady_free(kent_steady *s)
     free(s->valve_flow);
     free(s->valve_capacity);
     free(s->outflow);
+    kent_model_view_free(s->view);
     free(s);
+}
+
+void kent_steady_free_states(kent_steady **s, size_t count)
+{
+    for (size_t i = 0; s && i < count; i++) {
+        kent_steady_free(s[i]);
+    }
+    free((void *)s);
 }
 
 static kent_steady *steady_new(const kent_model *m)
 {
     kent_steady *s = kent_alloc(1, sizeof *s);
     if (!s) return NULL;
-    (void)snprintf(s->id, sizeof s->id, "normal");
+    s->model = m;
     s->node_head = kent_alloc(m->node_count, sizeof *s->node_head);
     s->span_flow = kent_alloc(m->span_count, sizeof *s->span_flow);
     s->valve_flow = kent_alloc(m->valve_count, sizeof *s->valve_flow);
@@ -307,6 +316,53 @@ done:
     free(x);
     kent_equations_free(eq);
     kent_steady_free(s);
+    return status;
+}
+
+/* Every message of a case with several states begins with the state's. */
+static kent_status tell_state(const kent_model *m, size_t state,
+                              const kent_error *cause, kent_error *err)
+{
+    if (cause->status == KENT_E_NOMEM || m->state_count < 2) {
+        return kent_error_set(err, cause->status, cause->where, "%s", cause->what);
+    }
+    return kent_error_set(err, cause->status, cause->where, "in state \"%s\": %.400s",
+                          m->states[state].id, cause->what);
+}
+
+/* One state into *out; capacity as of kent_model_in_state. */
+static kent_status solve_state(const kent_model *m, size_t state,
+                               const double *capacity, kent_steady **out,
+                               kent_error *err)
+{
+    kent_error cause = {0};
+    kent_steady *s = NULL;
+    kent_model *view = kent_model_in_state(m, (int)state, capacity);
+
+    if (!view) return kent_error_nomem(err);
+    (void)kent_steady_solve(view, &s, &cause);
+    if (!s) {
+        kent_model_view_free(view);
+        return tell_state(m, state, &cause, err);
+    }
+    s->view = view;
+    *out = s;
+    return KENT_OK;
+}
+
+kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
+                                     kent_error *err)
+{
+    kent_status status = KENT_OK;
+    const double *capacity = NULL;
+
+    for (size_t i = 0; i < m->state_count; i++) {
+        out[i] = NULL;
+    }
+    for (size_t i = 0; i < m->state_count && !status; i++) {
+        status = solve_state(m, i, capacity, &out[i], err);
+        if (i == 0 && out[0]) capacity = out[0]->valve_capacity;
+    }
     return status;
 }
 

@@ -21,7 +21,8 @@ typedef struct kent_steady_report {
 } kent_steady_report;
 
 typedef struct kent_steady {
-    char id[KENT_ID];       /* of the state: "normal" */
+    const kent_model *model; /* what it was found for: outlives it */
+    kent_model *view;        /* the same where it is a state's own view; else NULL */
     double *node_head;      /* [node_count] m, piezometric; at a fixed level that of the
                                pipe just inside: less (1 + loss) V2/2g of what flows out */
     double *span_flow;      /* [span_count] m3/s, positive from node[0] to node[1] */
@@ -38,6 +39,14 @@ typedef struct kent_steady {
  * runs uphill). */
 kent_status kent_steady_solve(const kent_model *m, kent_steady **out, kent_error *err);
 void kent_steady_free(kent_steady *s);
+void kent_steady_free_states(kent_steady **s, size_t count); /* and the list itself */
+
+/* Every state of m into out [state_count], in order; each owns its view of m. What a
+ * valve with a stated flow was found to pass in the first one it passes in all. Fails
+ * as above, saying in which state where there are several; out then holds those found
+ * before, and NULL from there on. */
+kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
+                                     kent_error *err);
 
 /* m: piezometric head at a chainage of a span; a straight line between its ends. */
 double kent_steady_head(const kent_model *m, const kent_steady *s, int span,

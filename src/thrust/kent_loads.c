@@ -17,6 +17,8 @@ double kent_thrust_azimuth(kent_vec3 thrust)
 
 /* ---- one case -------------------------------------------------------------------- */
 
+static const kent_march NO_MARCH = {-1, -1};
+
 static double kind_factor(const kent_model *m, kent_case_kind kind)
 {
     const double factor = m->loads.factor[kind];
@@ -24,13 +26,14 @@ static double kind_factor(const kent_model *m, kent_case_kind kind)
 }
 
 static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
-                                 kent_case_kind kind, int scenario)
+                                 kent_case_kind kind, kent_march march)
 {
     kent_load_case *c = &loads->cases[loads->count++];
 
     *c = (kent_load_case){
         .kind = kind,
-        .scenario = scenario,
+        .scenario = march.scenario,
+        .state = march.state,
         .safety_factor = kind_factor(m, kind),
         .above_90_percent = NAN,
         .step = NAN,
@@ -49,9 +52,10 @@ static void case_fill(kent_load_case *c, const kent_instant *instant)
     }
 }
 
-static void case_name(kent_load_case *c, const char *name)
+static void case_name(const kent_model *m, kent_load_case *c, const char *name)
 {
     (void)snprintf(c->name, sizeof c->name, "%s", name);
+    c->title = kent_name_in_state(m, c->name, c->state);
 }
 
 /* Pa under the field test, by elevation from where the gauge is read (9.1). */
@@ -78,33 +82,35 @@ static void loads_add_at_rest(const kent_model *m, const kent_fitting *f,
                               kent_fitting_loads *loads)
 {
     if (!isnan(m->loads.test_pressure)) {
-        kent_load_case *c = loads_add(m, loads, KENT_CASE_TEST, -1);
+        kent_load_case *c = loads_add(m, loads, KENT_CASE_TEST, NO_MARCH);
         const kent_instant i =
             kent_instant_at_rest(m, f, fitting_test_pressure(m, f), -1);
-        case_name(c, "test");
+        case_name(m, c, "test");
         case_fill(c, &i);
     }
-    kent_load_case *c = loads_add(m, loads, KENT_CASE_STATIC, -1);
+    kent_load_case *c = loads_add(m, loads, KENT_CASE_STATIC, NO_MARCH);
     const kent_instant i =
         kent_instant_at_rest(m, f, fitting_static_pressure(m, f), -1);
-    case_name(c, "static");
+    case_name(m, c, "static");
     case_fill(c, &i);
 }
 
-static void loads_add_steady(const kent_recorder *r, const kent_fitting *f,
-                             kent_fitting_loads *loads)
+static void loads_add_steady(const kent_recorder *r, size_t state,
+                             const kent_fitting *f, kent_fitting_loads *loads)
 {
-    const kent_model *m = r->model;
-    kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, -1);
+    const kent_steady *s = r->steadies[state];
+    const kent_model *m = s->model;
+    kent_load_case *c =
+        loads_add(m, loads, KENT_CASE_STEADY, (kent_march){-1, (int)state});
     kent_frame frame = {.time = NAN};
 
     for (size_t i = 0; i < f->port_count; i++) {
         const kent_port *port = &m->ports[f->port_first + i];
-        frame.head[i] = kent_steady_head(m, r->steady, port->span, port->chainage);
-        frame.flow[i] = port->sign * r->steady->span_flow[port->span];
+        frame.head[i] = kent_steady_head(m, s, port->span, port->chainage);
+        frame.flow[i] = port->sign * s->span_flow[port->span];
     }
     const kent_instant i = kent_instant_of_frame(m, f, &frame);
-    case_name(c, "steady");
+    case_name(m, c, "steady");
     case_fill(c, &i);
 }
 
@@ -121,17 +127,18 @@ static kent_case_kind scenario_kind(const kent_scenario *s)
     return KENT_CASE_EXCEPTIONAL;
 }
 
-static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t scenario,
-                               kent_fitting_loads *loads)
+static void loads_add_march(const kent_recorder *r, size_t fitting, size_t index,
+                            kent_fitting_loads *loads)
 {
-    const kent_model *m = r->model;
-    const kent_slot *slot = &r->slots[scenario];
+    const kent_march march = r->model->marches[index];
+    const kent_model *m = r->steadies[march.state]->model;
+    const kent_slot *slot = &r->slots[index];
     const kent_seen *seen = &slot->seen[fitting];
     const kent_fitting *f = &m->fittings[fitting];
-    kent_load_case *c =
-        loads_add(m, loads, scenario_kind(&m->scenarios[scenario]), (int)scenario);
+    const kent_scenario *scenario = &m->scenarios[march.scenario];
+    kent_load_case *c = loads_add(m, loads, scenario_kind(scenario), march);
 
-    case_name(c, m->scenarios[scenario].id);
+    case_name(m, c, scenario->id);
     if (seen->best[KENT_RESULTANT] < 0.0) return; /* not one instant was taken */
     for (int k = 0; k < KENT_SENSES; k++) {
         if (!(seen->best[k] > 0.0) && k != KENT_RESULTANT) continue;
@@ -148,7 +155,7 @@ static void loads_add_scenario(const kent_recorder *r, size_t fitting, size_t sc
 typedef struct kent_press {
     kent_case_kind kind;
     double pressure, time; /* Pa; s, NAN outside scenarios */
-    int scenario;          /* -1: none */
+    kent_march march;      /* -1, -1: none */
 } kent_press;
 
 /* Keeps the one that asks for more: with factors of their own the higher pressure need
@@ -167,29 +174,31 @@ static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side
     const kent_fitting *f = &m->fittings[fitting];
     const int toward = m->ports[f->port_first + side].toward;
     const kent_press at_rest = {KENT_CASE_STATIC, fitting_static_pressure(m, f), NAN,
-                                -1};
+                                NO_MARCH};
     kent_press most = at_rest;
+    char name[sizeof((kent_load_case *)NULL)->name];
 
     if (!isnan(m->loads.test_pressure)) {
-        most = (kent_press){KENT_CASE_TEST, fitting_test_pressure(m, f), NAN, -1};
+        most = (kent_press){KENT_CASE_TEST, fitting_test_pressure(m, f), NAN, NO_MARCH};
         press_take(m, &most, at_rest);
     }
-    for (size_t s = 0; s < m->scenario_count; s++) {
-        if (!r->slots[s].started) continue;
-        const kent_seen *seen = &r->slots[s].seen[fitting];
+    for (size_t i = 0; i < m->march_count; i++) {
+        if (!r->slots[i].started) continue;
+        const kent_seen *seen = &r->slots[i].seen[fitting];
         const kent_press peak = {
-            scenario_kind(&m->scenarios[s]),
+            scenario_kind(&m->scenarios[m->marches[i].scenario]),
             kent_model_pressure(m, seen->highest_head[side], f->at.z),
-            seen->highest_at[side], (int)s};
+            seen->highest_at[side], m->marches[i]};
         press_take(m, &most, peak);
     }
-    kent_load_case *c = loads_add(m, loads, most.kind, most.scenario);
+    kent_load_case *c = loads_add(m, loads, most.kind, most.march);
     kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
     i.time = most.time;
     c->closed = true;
     c->pressed = side;
-    (void)snprintf(c->name, sizeof c->name, "closed from %s",
+    (void)snprintf(name, sizeof name, "closed from %s",
                    m->points[toward >= 0 ? toward : f->point].id);
+    case_name(m, c, name);
     case_fill(c, &i);
 }
 
@@ -201,20 +210,23 @@ static int loads_of_fitting(const kent_recorder *r, size_t index,
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
 
-    loads->cases = kent_alloc(3 + m->scenario_count + KENT_PORTS, sizeof *loads->cases);
+    loads->cases = kent_alloc(2 + m->state_count + m->march_count + KENT_PORTS,
+                              sizeof *loads->cases);
     if (!loads->cases) return -1;
     if (!kent_fitting_in_network(f)) {
-        kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, -1);
+        kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, NO_MARCH);
         const kent_instant i = kent_instant_given(m, f);
         c->given = true;
-        case_name(c, "given");
+        case_name(m, c, "given");
         case_fill(c, &i);
         return 0;
     }
     loads_add_at_rest(m, f, loads);
-    loads_add_steady(r, f, loads);
-    for (size_t s = 0; s < m->scenario_count; s++) {
-        if (r->slots[s].started) loads_add_scenario(r, index, s, loads);
+    for (size_t s = 0; s < m->state_count; s++) {
+        loads_add_steady(r, s, f, loads);
+    }
+    for (size_t i = 0; i < m->march_count; i++) {
+        if (r->slots[i].started) loads_add_march(r, index, i, loads);
     }
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
         loads_add_closed(r, index, i, loads);
@@ -233,8 +245,8 @@ kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out
     loads->fittings = kent_alloc(count, sizeof *loads->fittings);
     if (!loads->fittings) goto done;
     loads->fitting_count = count;
-    for (size_t s = 0; s < r->model->scenario_count; s++) {
-        if (r->slots[s].failed) goto done;
+    for (size_t i = 0; i < r->model->march_count; i++) {
+        if (r->slots[i].failed) goto done;
     }
     for (size_t i = 0; i < count; i++) {
         if (loads_of_fitting(r, i, &loads->fittings[i])) goto done;

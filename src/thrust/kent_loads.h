@@ -29,8 +29,10 @@ typedef struct kent_instant {
 typedef struct kent_load_case {
     /* "test", "static", "steady", a scenario's id, "closed from P", "given" */
     char name[KENT_ID + 16];
+    kent_name title;     /* as printed: its name and, among several, its state's */
     kent_case_kind kind; /* whose safety factor it takes */
     int scenario;        /* -1: none; of a closed valve: whose peak presses on it */
+    int state;           /* the steady one or the march's; -1: of none in particular */
     bool given;          /* the one case of a ports-only fitting */
     bool closed;         /* of a shut valve, pressed from one side only: */
     size_t pressed;      /* which port */
@@ -55,10 +57,10 @@ typedef struct kent_loads_result {
 
 typedef struct kent_recorder kent_recorder;
 
-/* For one model and its steady state, which must outlive it; pass every scenario
- * through it, in any order. Per fitting and scenario it keeps about 3 kB, however many
- * steps. */
-kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
+/* For one model and its steady states [state_count], which must outlive it; pass every
+ * march through it, in any order. Per fitting and march it keeps about 3 kB, however
+ * many steps. */
+kent_status kent_recorder_new(const kent_model *m, kent_steady *const *steadies,
                               kent_recorder **out, kent_error *err);
 void kent_recorder_free(kent_recorder *r);
 
@@ -66,14 +68,15 @@ void kent_recorder_free(kent_recorder *r);
  * kent_recorder_take must have these first, in this order (more may follow). */
 const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count);
 
-/* One scenario's slot may be filled from any thread, but only from one at a time.
- * kent_recorder_start clears the slot: call it before the first take, and again where a
- * finer grid replaces a coarser one. step: s, of the grid. */
-void kent_recorder_start(kent_recorder *r, int scenario, double step);
-void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace);
+/* One march's slot, by its index in the model's marches, may be filled from any thread,
+ * but only from one at a time. kent_recorder_start clears the slot: call it before the
+ * first take, and again where a finer grid replaces a coarser one. step: s, of the
+ * grid. */
+void kent_recorder_start(kent_recorder *r, int march, double step);
+void kent_recorder_take(kent_recorder *r, int march, const kent_trace *trace);
 
-/* All load cases of all fittings; *out is the caller's. A scenario that was never
- * started has no case. */
+/* All load cases of all fittings; *out is the caller's. A march that was never started
+ * has no case. */
 kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
                                  kent_error *err);
 void kent_loads_free(kent_loads_result *l);

@@ -67,10 +67,10 @@ static double fitting_crossing(const kent_model *m, const kent_fitting *f)
 /* Coefficients of one port's push: F = per_head H + own Q^2 + widest Q_ref^2 +
  * constant, from 8.1 with the pressure of 8.3; Q^2 is the same for flow either way.
  */
-static int sensor_add_port(kent_recorder *r, const kent_fitting *f, size_t i,
-                           kent_sensor *sensor)
+static int sensor_add_port(kent_recorder *r, const kent_steady *s,
+                           const kent_fitting *f, size_t i, kent_sensor *sensor)
 {
-    const kent_model *m = r->model;
+    const kent_model *m = s->model;
     const kent_port *ports = &m->ports[f->port_first], *port = &ports[i];
     const size_t widest = kent_port_widest(ports, f->port_count);
     const double rho = m->water.density, gravity = m->gravity;
@@ -78,8 +78,7 @@ static int sensor_add_port(kent_recorder *r, const kent_fitting *f, size_t i,
     const double bore = 0.25 * PI * port->inside_diameter * port->inside_diameter;
     const double wide =
         0.25 * PI * ports[widest].inside_diameter * ports[widest].inside_diameter;
-    const double flow =
-        fmax(fabs(r->steady->span_flow[port->span]), USUAL_SPEED * bore);
+    const double flow = fmax(fabs(s->span_flow[port->span]), USUAL_SPEED * bore);
     const double beta = kent_port_momentum_factor(m, port, flow);
     const kent_vec3 inward = kent_vec3_scale(-1.0, port->direction);
 
@@ -102,31 +101,42 @@ static int sensor_add_port(kent_recorder *r, const kent_fitting *f, size_t i,
     return 0;
 }
 
-static int recorder_add_fitting(kent_recorder *r, size_t index)
+/* Where the ports are looked at: the same in every state. */
+static int recorder_watch_fitting(kent_recorder *r, const kent_fitting *f,
+                                  size_t *watch)
+{
+    const size_t first = r->watch_count;
+
+    assert(f->port_count <= KENT_PORTS);
+    for (size_t i = 0; i < f->port_count; i++) {
+        const kent_port *port = &r->model->ports[f->port_first + i];
+        if (recorder_watch(r, first, port->span, port->chainage, &watch[i])) return -1;
+    }
+    return 0;
+}
+
+static int recorder_add_fitting(kent_recorder *r, size_t state, size_t index)
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
-    kent_sensor *sensor = &r->sensors[index];
-    const size_t first = r->watch_count;
+    kent_sensor *sensor = &r->sensors[state * m->fitting_count + index];
 
     sensor->term_first = r->term_count;
     if (!kent_fitting_in_network(f)) return 0;
-    assert(f->port_count <= KENT_PORTS);
-    for (size_t i = 0; i < f->port_count; i++) {
-        const kent_port *port = &m->ports[f->port_first + i];
-        if (recorder_watch(r, first, port->span, port->chainage, &sensor->watch[i])) {
-            return -1;
-        }
+    if (state > 0) {
+        memcpy(sensor->watch, r->sensors[index].watch, sizeof sensor->watch);
+    } else if (recorder_watch_fitting(r, f, sensor->watch)) {
+        return -1;
     }
     if (f->weight > 0.0) sensor->constant = (kent_vec3){0.0, 0.0, -f->weight};
     for (size_t i = 0; i < f->port_count; i++) {
-        if (sensor_add_port(r, f, i, sensor)) return -1;
+        if (sensor_add_port(r, r->steadies[state], f, i, sensor)) return -1;
     }
     sensor->crossing = fitting_crossing(m, f);
     return 0;
 }
 
-kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
+kent_status kent_recorder_new(const kent_model *m, kent_steady *const *steadies,
                               kent_recorder **out, kent_error *err)
 {
     kent_status status = KENT_E_NOMEM;
@@ -134,12 +144,14 @@ kent_status kent_recorder_new(const kent_model *m, const kent_steady *s,
 
     if (!r) goto done;
     r->model = m;
-    r->steady = s;
-    r->sensors = kent_alloc(m->fitting_count, sizeof *r->sensors);
-    r->slots = kent_alloc(m->scenario_count, sizeof *r->slots);
+    r->steadies = steadies;
+    r->sensors = kent_alloc(m->state_count, m->fitting_count * sizeof *r->sensors);
+    r->slots = kent_alloc(m->march_count, sizeof *r->slots);
     if (!r->sensors || !r->slots) goto done;
-    for (size_t i = 0; i < m->fitting_count; i++) {
-        if (recorder_add_fitting(r, i)) goto done;
+    for (size_t s = 0; s < m->state_count; s++) {
+        for (size_t i = 0; i < m->fitting_count; i++) {
+            if (recorder_add_fitting(r, s, i)) goto done;
+        }
     }
     *out = r;
     r = NULL; /* handed over */
@@ -152,7 +164,7 @@ done:
 void kent_recorder_free(kent_recorder *r)
 {
     if (!r) return;
-    for (size_t i = 0; r->slots && i < r->model->scenario_count; i++) {
+    for (size_t i = 0; r->slots && i < r->model->march_count; i++) {
         free(r->slots[i].seen);
         free(r->slots[i].past);
     }
@@ -169,7 +181,15 @@ const kent_watch *kent_recorder_watches(const kent_recorder *r, size_t *count)
     return r->watches;
 }
 
-/* ---- one scenario ---------------------------------------------------------------- */
+/* ---- one march ------------------------------------------------------------------- */
+
+/* The sensors of the state that a march starts from, [fitting_count]. */
+static const kent_sensor *march_sensors(const kent_recorder *r, int march)
+{
+    const size_t state = (size_t)r->model->marches[march].state;
+
+    return r->sensors + state * r->model->fitting_count;
+}
 
 /* Instants to go back for dQ/dt: the crossing in whole steps, at least one. */
 static size_t sensor_lag(const kent_sensor *sensor, double step)
@@ -178,9 +198,9 @@ static size_t sensor_lag(const kent_sensor *sensor, double step)
     return (size_t)fmax(1.0, ceil(sensor->crossing / step - 1e-9));
 }
 
-void kent_recorder_start(kent_recorder *r, int scenario, double step)
+void kent_recorder_start(kent_recorder *r, int march, double step)
 {
-    kent_slot *slot = &r->slots[scenario];
+    kent_slot *slot = &r->slots[march];
     const size_t count = r->model->fitting_count;
 
     assert(step > 0.0);
@@ -313,8 +333,8 @@ static void sensor_thrusts(const kent_recorder *r, const kent_sensor *sensor,
 }
 
 /* Finds the worst instants of a trace for one fitting, then keeps those alone. */
-static void seen_take(const kent_recorder *r, const kent_slot *slot,
-                      const kent_trace *trace, size_t index)
+static void seen_take(const kent_recorder *r, const kent_sensor *sensor,
+                      const kent_slot *slot, const kent_trace *trace, size_t index)
 {
     kent_seen *seen = &slot->seen[index];
     size_t at[KENT_SENSES];
@@ -323,7 +343,7 @@ static void seen_take(const kent_recorder *r, const kent_slot *slot,
 
     for (size_t first = 0; first < trace->count; first += CHUNK) {
         const size_t left = trace->count - first, count = left < CHUNK ? left : CHUNK;
-        sensor_thrusts(r, &r->sensors[index], trace, first, count, &t);
+        sensor_thrusts(r, sensor, trace, first, count, &t);
         for (size_t n = 0; n < count; n++) {
             const double sideways = t.x[n] * t.x[n] + t.y[n] * t.y[n];
             const double all = sideways + t.z[n] * t.z[n];
@@ -405,9 +425,10 @@ static void slot_take_past(const kent_recorder *r, kent_slot *slot,
     }
 }
 
-void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace)
+void kent_recorder_take(kent_recorder *r, int march, const kent_trace *trace)
 {
-    kent_slot *slot = &r->slots[scenario];
+    kent_slot *slot = &r->slots[march];
+    const kent_sensor *sensors = march_sensors(r, march);
 
     assert(slot->started && trace->watch_count >= r->watch_count);
     if (slot->failed || trace->count == 0) return;
@@ -419,7 +440,7 @@ void kent_recorder_take(kent_recorder *r, int scenario, const kent_trace *trace)
     for (size_t i = 0; i < r->model->fitting_count; i++) {
         const kent_fitting *f = &r->model->fittings[i];
         if (!kent_fitting_in_network(f)) continue;
-        seen_take(r, slot, trace, i);
+        seen_take(r, &sensors[i], slot, trace, i);
         seen_take_heads(r, slot, trace, i);
         if (f->type == KENT_VALVE) seen_take_faces(r, trace, i, &slot->seen[i]);
     }

@@ -20,7 +20,7 @@ typedef struct kent_term {
     kent_vec3 per_square; /* N s2/m6 */
 } kent_term;
 
-typedef struct kent_sensor { /* of one fitting */
+typedef struct kent_sensor { /* of one fitting in one state: beta is that state's */
     size_t term_first, term_count;
     size_t watch[KENT_PORTS]; /* by port */
     kent_vec3 constant;       /* N */
@@ -31,7 +31,7 @@ typedef struct kent_sensor { /* of one fitting */
  * doubling. A doubling's upper part above 0.9^2 spans fewer than 400 of them. */
 enum { KENT_LEVELS = 512 };
 
-typedef struct kent_seen {    /* of one fitting in one scenario */
+typedef struct kent_seen {    /* of one fitting in one march */
     double best[KENT_SENSES]; /* N2, N2, N, N; -1: none yet, up and down 0 */
     kent_frame frame[KENT_SENSES];
     double lowest, highest; /* m, head of the widest port */
@@ -42,7 +42,7 @@ typedef struct kent_seen {    /* of one fitting in one scenario */
         at_level[KENT_LEVELS]; /* instants by level, the lowest bits of which index */
 } kent_seen;
 
-typedef struct kent_slot { /* of one scenario */
+typedef struct kent_slot { /* of one march */
     bool started, failed;
     double step;     /* s */
     kent_seen *seen; /* [fitting_count] */
@@ -53,13 +53,13 @@ typedef struct kent_slot { /* of one scenario */
 
 struct kent_recorder {
     const kent_model *model;
-    const kent_steady *steady;
+    kent_steady *const *steadies; /* [state_count] */
     kent_watch *watches;
     size_t watch_count, watch_capacity;
     kent_term *terms;
     size_t term_count, term_capacity;
-    kent_sensor *sensors; /* [fitting_count] */
-    kent_slot *slots;     /* [scenario_count] */
+    kent_sensor *sensors; /* [state_count][fitting_count]; watches are the same */
+    kent_slot *slots;     /* [march_count] */
 };
 
 /* Level of a squared resultant. */

@@ -101,10 +101,10 @@ a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky(void **stat
     const int end = kent_model_point_index(b.model, "E");
     const double fast = r->scenarios[0].points[end].highest_head;
     const double slow = r->scenarios[1].points[end].highest_head;
-    const double speed = r->steady->span_flow[0] / b.model->spans[0].area;
+    const double speed = r->steadies[0]->span_flow[0] / b.model->spans[0].area;
     const double joukowsky = 1000.0 * speed / b.model->gravity; /* m, a V/g */
     assert_true(slow > 60.0 && fast > slow);
-    assert_true(fast <= r->steady->node_head[0] + joukowsky + 1e-9);
+    assert_true(fast <= r->steadies[0]->node_head[0] + joukowsky + 1e-9);
     assert_true(r->scenarios[0].uncertainty >= 0.0 &&
                 r->scenarios[0].uncertainty < 1.0);
     kent_results_free(r);

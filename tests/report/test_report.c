@@ -41,7 +41,7 @@ static void nothing_printed_is_wider_than_a_hundred_columns(void **state)
             assert_int_equal(kent_report_tables(r, &o, sink), KENT_OK);
             assert_narrow(kent_text_of(&out));
             kent_text_reset(&out);
-            assert_int_equal(kent_report_check(r->model, &r->steady, &o, sink),
+            assert_int_equal(kent_report_check(r->model, r->steadies, &o, sink),
                              KENT_OK);
             assert_narrow(kent_text_of(&out));
             kent_text_clear(&out);
@@ -143,7 +143,7 @@ static void check_lists_all_that_was_understood(void **state)
     const kent_model *m = mixed.build.model;
     kent_text out = {0};
     const kent_sink sink = kent_mixed_sink(&out);
-    assert_int_equal(kent_report_check(m, &mixed.results->steady, &o, sink), KENT_OK);
+    assert_int_equal(kent_report_check(m, mixed.results->steadies, &o, sink), KENT_OK);
     for (size_t i = 0; i < m->point_count; i++) {
         assert_contains(kent_text_of(&out), m->points[i].id);
     }

@@ -28,11 +28,13 @@ static kent_load_case hand_case(const kent_model *m, const kent_fitting *f,
     kent_load_case c = {
         .kind = from->kind,
         .scenario = surge ? 0 : -1,
+        .state = surge ? 0 : -1,
         .safety_factor = from->factor,
         .above_90_percent = surge ? 3.0 : (double)NAN,
     };
 
     (void)snprintf(c.name, sizeof c.name, "%s", from->name);
+    c.title = kent_name_in_state(m, c.name, c.state);
     c.worst[KENT_RESULTANT] = at;
     c.worst[KENT_SIDEWAYS] = at;
     if (at.balance.thrust.z > 0.0) c.worst[KENT_UPWARD] = at;

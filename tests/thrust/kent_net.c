@@ -11,7 +11,7 @@ kent_net kent_net_of(kent_build build)
 
     kent_build_derive(&n.build);
     if (kent_steady_solve(n.model, &n.steady, &err)) fail_msg("%s", err.what);
-    if (kent_recorder_new(n.model, n.steady, &n.recorder, &err)) {
+    if (kent_recorder_new(n.model, &n.steady, &n.recorder, &err)) {
         fail_msg("%s", err.what);
     }
     n.watches = kent_recorder_watches(n.recorder, &n.watch_count);

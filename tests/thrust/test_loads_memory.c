@@ -17,7 +17,7 @@ static int whole_stage(void *context)
     kent_derivation d = {0};
     size_t watches = 0;
 
-    kent_status status = kent_recorder_new(n->model, n->steady, &r, &err);
+    kent_status status = kent_recorder_new(n->model, &n->steady, &r, &err);
     if (status) goto done;
     (void)kent_recorder_watches(r, &watches);
     const kent_trace trace = {2, watches, TIME, HEAD, FLOW};

@@ -113,11 +113,11 @@ static void the_barometer_moves_no_thrust(void **state)
         (void)kent_build_ports(&b, "F", KENT_BEND, ports, 2);
         b.model->barometric = k == 0 ? 101325.0 : 60000.0;
         kent_build_derive(&b);
-        const kent_steady nothing = {0};
+        kent_steady nothing = {0}, *steadies = &nothing;
         kent_error err = {0};
         kent_recorder *r = NULL;
         kent_loads_result *loads = NULL;
-        assert_int_equal(kent_recorder_new(b.model, &nothing, &r, &err), KENT_OK);
+        assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
         assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
         thrust[k] = loads->fittings[0].cases[0].worst[KENT_RESULTANT].balance.thrust;
         kent_loads_free(loads);
