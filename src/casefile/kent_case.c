@@ -15,14 +15,19 @@ void kent_fill_assume(kent_filling *f, const char *what, const char *value,
     kent_notes_add(&f->model->assumed, "%s\t%s\t%s", what, value, why);
 }
 
+void kent_fill_show(const kent_filling *f, double si, kent_kind kind, char *out,
+                    size_t size)
+{
+    const kent_display d = kent_units_display(kind, f->model->units);
+    (void)snprintf(out, size, "%.5g%s%s", kent_units_shown(kind, f->model->units, si),
+                   d.unit[0] ? " " : "", d.unit);
+}
+
 void kent_fill_assume_value(kent_filling *f, const char *what, double si,
                             kent_kind kind, const char *why)
 {
     char value[64];
-    const kent_display d = kent_units_display(kind, f->model->units);
-    (void)snprintf(value, sizeof value, "%.5g%s%s",
-                   kent_units_shown(kind, f->model->units, si), d.unit[0] ? " " : "",
-                   d.unit);
+    kent_fill_show(f, si, kind, value, sizeof value);
     kent_fill_assume(f, what, value, why);
 }
 

@@ -7,11 +7,74 @@
 
 /* ---- soils ----------------------------------------------------------------------- */
 
+/* What a row of the catalogue says of bearing. */
 static void assume_bearing(kent_filling *f, const kent_soil *row)
 {
+    static const char *const WHAT[] = {
+        [KENT_BEARING_CONSTANT] = "allowable bearing",
+        [KENT_BEARING_BY_DEPTH] = "bearing by depth",
+        [KENT_BEARING_GRADIENT] = "bearing per depth",
+        [KENT_BEARING_PASSIVE] = "share of the passive earth pressure",
+    };
     char what[96];
-    (void)snprintf(what, sizeof what, "allowable bearing of %s", row->id);
-    kent_fill_assume_value(f, what, row->allowable_bearing, KENT_STRESS, row->source);
+    (void)snprintf(what, sizeof what, "%s of %s", WHAT[row->route], row->id);
+    switch (row->route) {
+    case KENT_BEARING_CONSTANT:
+        kent_fill_assume_value(f, what, row->allowable_bearing, KENT_STRESS,
+                               row->source);
+        break;
+    case KENT_BEARING_BY_DEPTH: {
+        const kent_depth_row *last = &row->by_depth[row->by_depth_count - 1];
+        char least[64];
+        char most[64];
+        char value[140];
+        kent_fill_show(f, row->by_depth[0].bearing, KENT_STRESS, least, sizeof least);
+        kent_fill_show(f, last->bearing, KENT_STRESS, most, sizeof most);
+        (void)snprintf(value, sizeof value, "%s to %s", least, most);
+        kent_fill_assume(f, what, value, row->source);
+        break;
+    }
+    case KENT_BEARING_GRADIENT:
+        kent_fill_assume_value(f, what, row->bearing_gradient, KENT_UNIT_WEIGHT,
+                               row->source);
+        break;
+    case KENT_BEARING_PASSIVE:
+        kent_fill_assume_value(f, what, row->passive_share, KENT_RATIO, row->source);
+        break;
+    }
+}
+
+static bool gives_bearing(const kent_record *record)
+{
+    return kent_record_has(record, "allowable_bearing") ||
+           kent_record_has(record, "bearing_by_depth") ||
+           kent_record_has(record, "bearing_gradient") ||
+           kent_record_has(record, "passive_share");
+}
+
+static void check_soil(kent_filling *f, kent_record *record, const kent_soil *s)
+{
+    const bool unbearing =
+        s->route == KENT_BEARING_CONSTANT && s->allowable_bearing <= 0.0;
+    if (!kent_soil_has_bearing(s)) {
+        kent_record_complain(&f->reader, record, NULL,
+                             "its bearing is missing; give allowable_bearing, "
+                             "bearing_by_depth, bearing_gradient or passive_share, or "
+                             "name a soil of the catalogue by from");
+    } else if (s->route == KENT_BEARING_PASSIVE &&
+               (isnan(s->unit_weight) ||
+                (isnan(s->friction_angle) && isnan(s->cohesion)))) {
+        kent_record_complain(&f->reader, record, "passive_share",
+                             "passive_share needs %s, from which the passive earth "
+                             "pressure follows",
+                             isnan(s->unit_weight) ? "unit_weight"
+                                                   : "friction_angle or cohesion");
+    } else if (gives_bearing(record) && !kent_record_has(record, "factor_inside") &&
+               !unbearing) {
+        char what[96];
+        (void)snprintf(what, sizeof what, "factor inside the bearing of %s", s->id);
+        kent_fill_assume(f, what, "1.0", "factor_inside not given");
+    }
 }
 
 void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
@@ -25,7 +88,7 @@ void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
         *s = *from;
         (void)snprintf(s->source, sizeof s->source, "given in the case, else %.150s",
                        from->source);
-        if (!kent_record_has(record, "allowable_bearing")) assume_bearing(f, from);
+        if (!gives_bearing(record)) assume_bearing(f, from);
     }
     if (kent_record_has(record, "source")) {
         kent_record_copy(record, "source", NULL, s->source, sizeof s->source);
@@ -33,18 +96,7 @@ void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
     kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
     kent_record_soil(&f->reader, record, s);
     s->place = record->place;
-    if (!record->sound) return;
-    if (isnan(s->allowable_bearing)) {
-        kent_record_complain(
-            &f->reader, record, NULL,
-            "allowable_bearing is missing; give it, or name a soil of the "
-            "catalogue by from");
-    } else if (row < 0 && !kent_record_has(record, "factor_inside") &&
-               s->allowable_bearing > 0.0) {
-        char what[96];
-        (void)snprintf(what, sizeof what, "factor inside the bearing of %s", s->id);
-        kent_fill_assume(f, what, "1.0", "factor_inside not given");
-    }
+    if (record->sound) check_soil(f, record, s);
 }
 
 int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char *key)

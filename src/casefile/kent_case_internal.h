@@ -17,6 +17,9 @@ typedef struct kent_filling {
     size_t port_capacity;
     size_t level_capacity, scenario_state_capacity;
     size_t creep_capacity, obstacle_capacity, together_capacity;
+    const kent_material *creeping; /* whose elements stand in the model ... */
+    size_t creep_first;            /* ... from here on */
+    bool knows_temperature;        /* of the water: the case gives it */
 } kent_filling;
 
 /* Reads the group under a key of a record; without one *out is empty. Returns whether
@@ -41,12 +44,23 @@ kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_
     kent_fill_valve, kent_fill_state, kent_fill_scenario, kent_fill_soil,
     kent_fill_ground_zone, kent_fill_fitting;
 
+/* Of a pipe: the three ratings, de-rated where its material is a warm plastic, and the
+ * standard that they are by. row, material: NULL where none is named. */
+void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_class *row,
+                       const kent_material *material, kent_pipe *p);
+void kent_fill_standard(kent_filling *f, kent_record *record,
+                        const kent_pipe_class *row, kent_pipe *p);
+
 /* The states that a scenario names; without a list it starts from every one. */
 void kent_fill_scenario_states(kent_filling *f, kent_record *record, kent_scenario *s);
 
 /* Index of a soil that a record names, -1 without one; a soil of the catalogue is
  * copied into the model when it is first named. */
 int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char *key);
+
+/* A value with its unit, as everything said of the case shows it. */
+void kent_fill_show(const kent_filling *f, double si, kent_kind kind, char *out,
+                    size_t size);
 
 /* Notes what nobody gave: "what\tvalue\twhy". */
 void kent_fill_assume(kent_filling *f, const char *what, const char *value,

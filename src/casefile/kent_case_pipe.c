@@ -163,37 +163,47 @@ static void fill_joint(kent_filling *f, kent_record *record, kent_pipe *p)
     }
 }
 
-static void fill_ratings(const kent_record *record, const kent_pipe_class *row,
-                         kent_pipe *p)
+static void add_creep(kent_filling *f, const kent_creep *rows, size_t count,
+                      kent_pipe *p)
 {
-    p->pressure_rating = kent_record_number_or(record, "pressure_rating",
-                                               row ? row->pressure_rating : NAN);
-    p->surge_rating =
-        kent_record_number_or(record, "surge_rating", row ? row->surge_rating : NAN);
-    p->test_rating =
-        kent_record_number_or(record, "test_rating", row ? row->test_rating : NAN);
+    kent_model *m = f->model;
+    if (kent_grow((void **)&m->creep, &f->creep_capacity, m->creep_count + count,
+                  sizeof *m->creep) != 0) {
+        f->reader.failed = true;
+        return;
+    }
+    p->creep_first = m->creep_count;
+    p->creep_count = count;
+    for (size_t i = 0; i < count; i++) {
+        m->creep[m->creep_count++] = rows[i];
+    }
 }
 
-/* "EN 545" of "EN 545:2010": the standard without an edition. */
-static bool is_without_edition(const char *name, const char *standard)
+/* Elements of a plastic wall: the case's, else the material's. */
+static void fill_creep(kent_filling *f, kent_record *record,
+                       const kent_material *material, kent_pipe *p)
 {
-    const size_t n = strlen(name);
-    return strncmp(name, standard, n) == 0 && strchr(":- ", standard[n]) != NULL;
-}
-
-static void fill_standard(kent_filling *f, kent_record *record,
-                          const kent_pipe_class *row, kent_pipe *p)
-{
-    const char *own = kent_record_field(record, "standard")->text;
-    const char *of_class = row ? row->standard : "";
-    const char *holds =
-        !own || (row && is_without_edition(own, of_class)) ? of_class : own;
-    (void)snprintf(p->standard, sizeof p->standard, "%s", holds);
-    if (row && strcmp(holds, of_class) != 0) {
+    kent_creep own[KENT_CREEP_ROWS];
+    const size_t count = kent_record_creep(&f->reader, record, own);
+    if (kent_record_has(record, "creep")) {
+        add_creep(f, own, count, p);
         kent_notes_add(&f->model->cautions,
-                       "pipe \"%s\": its standard is \"%s\", but class %s is of "
-                       "\"%s\": walls and ratings of two editions do not mix",
-                       p->id, own, row->id, of_class);
+                       "creep of pipe walls is read, but surges are worked out with "
+                       "elastic walls: a plastic pipe damps them more than is shown");
+        if (record->sound && material && !material->plastic) {
+            kent_record_complain(&f->reader, record, "creep",
+                                 "creep is of plastic walls, and %s is none; leave it "
+                                 "out, or name the material",
+                                 material->id);
+        }
+    } else if (material && material->creep_count > 0) {
+        if (f->creeping != material) {
+            add_creep(f, material->creep, material->creep_count, p);
+            f->creep_first = p->creep_first;
+            f->creeping = material;
+        }
+        p->creep_first = f->creep_first;
+        p->creep_count = material->creep_count;
     }
 }
 
@@ -233,8 +243,9 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
     p->loss = kent_record_number_or(record, "loss", 0.0);
     p->thin_wall = kent_record_field(record, "wall_theory")->index == 1;
     p->branch_turn = kent_record_number(record, "branch_turn");
-    fill_ratings(record, row, p);
-    fill_standard(f, record, row, p);
+    kent_fill_ratings(f, record, row, material, p);
+    fill_creep(f, record, material, p);
+    kent_fill_standard(f, record, row, p);
     fill_route(f, record, p);
     fill_diameters(f, record, row, p);
     fill_material(f, record, material, p);

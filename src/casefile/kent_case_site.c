@@ -56,6 +56,7 @@ void kent_fill_water(kent_filling *f)
     water.vapour_pressure = given(&r, there, "vapour_pressure", water.vapour_pressure);
     water.sound_speed = sqrt(water.bulk_modulus / water.density);
     f->model->water = water;
+    f->knows_temperature = warm;
     f->model->gas_content = given(&r, there, "gas_content", 0.0);
 }
 

@@ -33,6 +33,131 @@ static const char DESIGN[] =
     "1.5;\n"
     "  future_pressure = \"9 bar\"; future_gauge_at = \"T1\"; };\n";
 
+/* The soil "bank" by some keys, under the whole main. */
+static char *with_bank(const char *keys)
+{
+    char piece[400];
+    (void)snprintf(piece, sizeof piece,
+                   "soils = ( { id = \"bank\"; %s } );\nground = { soil = \"bank\"",
+                   keys);
+    return replaced(DESIGN, "ground = { soil = \"sand-SP\"", piece);
+}
+
+static void a_bearing_is_known_in_one_of_four_ways(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys;
+        kent_bearing_route route;
+        double constant, gradient, share; /* Pa, Pa/m, - */
+        double inside;
+        bool assumes_inside;
+    } ROWS[] = {
+        {"allowable_bearing = \"150 kPa\"; factor_inside = 2.0;", KENT_BEARING_CONSTANT,
+         150e3, NAN, NAN, 2.0, false},
+        {"allowable_bearing = \"0 kPa\";", KENT_BEARING_CONSTANT, 0.0, NAN, NAN, 1.0,
+         false},
+        {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ), ( \"2 m\", \"120 kPa\" ) );",
+         KENT_BEARING_BY_DEPTH, NAN, NAN, NAN, 1.0, true},
+        {"bearing_gradient = \"31.4 kPa/m\"; factor_inside = 1.5;",
+         KENT_BEARING_GRADIENT, NAN, 31.4e3, NAN, 1.5, false},
+        {"passive_share = 0.4; unit_weight = \"19 kN/m^3\"; friction_angle = \"30 "
+         "deg\";",
+         KENT_BEARING_PASSIVE, NAN, NAN, 0.4, 1.0, true},
+        {"passive_share = 0.4; unit_weight = \"19 kN/m^3\"; cohesion = \"20 kPa\";",
+         KENT_BEARING_PASSIVE, NAN, NAN, 0.4, 1.0, true},
+        /* a way of the case's own takes the place of the row's */
+        {"from = \"sand-SP\"; bearing_gradient = \"31.4 kPa/m\";",
+         KENT_BEARING_GRADIENT, NAN, 31.4e3, NAN, 1.0, true},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = with_bank(ROWS[i].keys);
+        kent_model *m = read_sound(c, text);
+        const kent_soil *s = &m->soils[0];
+        assert_int_equal(s->route, ROWS[i].route);
+        assert_true(isnan(ROWS[i].constant) ? isnan(s->allowable_bearing)
+                                            : s->allowable_bearing == ROWS[i].constant);
+        assert_true(isnan(ROWS[i].gradient)
+                        ? isnan(s->bearing_gradient)
+                        : fabs(s->bearing_gradient - ROWS[i].gradient) < 1e-6);
+        assert_true(isnan(ROWS[i].share) ? isnan(s->passive_share)
+                                         : s->passive_share == ROWS[i].share);
+        assert_close(s->factor_inside, ROWS[i].inside, 1e-15);
+        assert_int_equal(s->by_depth_count, s->route == KENT_BEARING_BY_DEPTH ? 2 : 0);
+        assert_int_equal(assumed(m, "factor inside the bearing of bank") != NULL,
+                         ROWS[i].assumes_inside);
+        assert_null(assumed(m, "allowable bearing of sand-SP"));
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void the_bearing_of_a_row_is_assumed_in_its_own_way(void **state)
+{
+    (void)state;
+    static const struct {
+        kent_bearing_route route;
+        const char *what, *value;
+    } ROWS[] = {
+        {KENT_BEARING_CONSTANT, "allowable bearing of sand-SP", "191.52 kPa\t"},
+        {KENT_BEARING_BY_DEPTH, "bearing by depth of sand-SP", "50 kPa to 90 kPa\t"},
+        {KENT_BEARING_GRADIENT, "bearing per depth of sand-SP", "31.4 kN/m3\t"},
+        {KENT_BEARING_PASSIVE, "share of the passive earth pressure of sand-SP",
+         "0.25\t"},
+    };
+    kent_catalogue *c = read_catalogue();
+    size_t sand = 0;
+    while (strcmp(c->soils[sand].id, "sand-SP") != 0) {
+        sand++;
+    }
+    kent_soil *row = &c->soils[sand];
+    row->by_depth_count = 2;
+    row->by_depth[0] = (kent_depth_row){1.0, 50e3};
+    row->by_depth[1] = (kent_depth_row){2.0, 90e3};
+    row->bearing_gradient = 31.4e3;
+    row->passive_share = 0.25;
+    row->unit_weight = 19e3;
+    row->friction_angle = 0.5;
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        row->route = ROWS[i].route;
+        kent_model *m = read_sound(c, DESIGN);
+        const char *note = assumed(m, ROWS[i].what);
+        assert_non_null(note);
+        assert_memory_equal(note, ROWS[i].value, strlen(ROWS[i].value));
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_bearing_that_cannot_be_known_is_refused(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys, *what;
+    } ROWS[] = {
+        {"unit_weight = \"19 kN/m^3\";",
+         "soil \"bank\": its bearing is missing; give allowable_bearing, "
+         "bearing_by_depth, bearing_gradient or passive_share, or name a soil of the "
+         "catalogue by from"},
+        {"passive_share = 0.4; friction_angle = \"30 deg\";",
+         "soil \"bank\": passive_share needs unit_weight, from which the passive earth "
+         "pressure follows"},
+        {"passive_share = 0.4; unit_weight = \"19 kN/m^3\";",
+         "soil \"bank\": passive_share needs friction_angle or cohesion, from which "
+         "the "
+         "passive earth pressure follows"},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = with_bank(ROWS[i].keys);
+        assert_refused_at(c, text, 15, ROWS[i].what);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
 static void zones_of_ground_arrive(void **state)
 {
     (void)state;
@@ -281,6 +406,9 @@ static void what_needs_a_main_is_refused_beside_ports(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_bearing_is_known_in_one_of_four_ways),
+        cmocka_unit_test(the_bearing_of_a_row_is_assumed_in_its_own_way),
+        cmocka_unit_test(a_bearing_that_cannot_be_known_is_refused),
         cmocka_unit_test(zones_of_ground_arrive),
         cmocka_unit_test(an_obstacle_lies_sideways),
         cmocka_unit_test(tests_are_stated_or_found_by_a_rule),

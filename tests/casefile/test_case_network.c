@@ -95,6 +95,149 @@ static void a_standard_of_another_edition_is_cautioned(void **state)
     kent_catalogue_free(c);
 }
 
+/* The catalogue with ductile iron made a plastic: shares 1.00 and 0.80 at 20 and 40
+ * degC, one element of creep, and surge rated at 20 bar. */
+static kent_catalogue *with_a_plastic(void)
+{
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < c->material_count; i++) {
+        kent_material *m = &c->materials[i];
+        if (strcmp(m->id, "ductile-iron") != 0) continue;
+        m->plastic = true;
+        m->derating_count = 2;
+        m->derating[0] = (kent_derating){293.15, 1.0};
+        m->derating[1] = (kent_derating){313.15, 0.8};
+        m->creep_count = 1;
+        m->creep[0] = (kent_creep){0.05, 1e-10};
+    }
+    for (size_t i = 0; i < c->pipe_count; i++) {
+        if (strcmp(c->pipes[i].material, "ductile-iron") != 0) continue;
+        c->pipes[i].surge_rating = 20e5;
+        c->pipes[i].test_rating = NAN;
+    }
+    return c;
+}
+
+static kent_model *read_warm(const kent_catalogue *c, const char *temperature,
+                             const char *ratings)
+{
+    char *warm = replaced(MAIN, "12 degC", temperature);
+    char *text = replaced(warm,
+                          "pressure_rating = \"16 bar\";\n    surge_rating = \"19 "
+                          "bar\"; test_rating = \"25 bar\";",
+                          ratings);
+    kent_model *m = read_sound(c, text);
+    free(warm);
+    free(text);
+    return m;
+}
+
+/* Half-way between 20 and 40 degC nine tenths are left. */
+static void ratings_of_a_warm_plastic_are_reduced(void **state)
+{
+    (void)state;
+    kent_catalogue *c = with_a_plastic();
+    const kent_pipe_class *row = kent_catalogue_pipe(c, "DI-EN545-C40-DN300");
+    kent_model *m = read_warm(c, "30 degC", "");
+    assert_close(m->pipes[0].derating, 0.9, 1e-12);
+    assert_close(m->pipes[0].pressure_rating, row->pressure_rating, 1e-15);
+    assert_close(m->pipes[0].surge_rating, 20e5, 1e-15);
+    const char *note = assumed(m, "share of its ratings that ductile-iron keeps");
+    assert_non_null(note);
+    assert_memory_equal(note, "0.9\twater at 30 degC; catalogue (",
+                        strlen("0.9\twater at 30 degC; catalogue ("));
+    kent_model_free(m);
+
+    /* What the case rates holds as it stands; what it leaves to the class does not. */
+    m = read_warm(c, "30 degC", "pressure_rating = \"16 bar\";");
+    assert_close(m->pipes[0].pressure_rating * m->pipes[0].derating, 16e5, 1e-12);
+    assert_close(m->pipes[0].surge_rating * m->pipes[0].derating, 18e5, 1e-12);
+    assert_true(isnan(m->pipes[0].test_rating));
+    kent_model_free(m);
+
+    m = read_warm(c, "20 degC", "");
+    assert_close(m->pipes[0].derating, 1.0, 1e-15);
+    assert_null(assumed(m, "share of its ratings that ductile-iron keeps"));
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void water_too_warm_for_a_plastic_is_refused(void **state)
+{
+    (void)state;
+    kent_catalogue *c = with_a_plastic();
+    char *warm = replaced(MAIN, "12 degC", "41 degC");
+    assert_refused_at(
+        c, warm, 12,
+        "pipe \"B\": the water is too warm for ductile-iron: 41 degC, and "
+        "its ratings end at 40 degC; give the pressure_rating that holds "
+        "at this temperature, or take another material");
+    char *text = replaced(warm, "left\";", "left\"; pressure_rating = \"6 bar\";");
+    kent_model *m = read_sound(c, text);
+    assert_close(m->pipes[1].pressure_rating * m->pipes[1].derating, 6e5, 1e-12);
+    assert_true(isnan(m->pipes[1].surge_rating)); /* the class's does not hold */
+    assert_int_equal(cautions_with(m, "pipe \"B\": the water, 41 degC, is warmer"), 1);
+    kent_model_free(m);
+    free(text);
+    free(warm);
+    kent_catalogue_free(c);
+}
+
+static void ratings_by_an_unstated_temperature_say_so(void **state)
+{
+    (void)state;
+    kent_catalogue *c = with_a_plastic();
+    char *text = replaced(MAIN, "temperature = \"12 degC\";",
+                          "density = \"1000 kg/m^3\"; bulk_modulus = \"2.2 GPa\"; "
+                          "viscosity = \"1 mPa s\"; vapour_pressure = \"2 kPa\";");
+    kent_model *m = read_sound(c, text);
+    assert_non_null(assumed(m, "water temperature"));
+    kent_model_free(m);
+    kent_catalogue_free(c);
+
+    c = read_catalogue(); /* nothing of iron hangs on it */
+    m = read_sound(c, text);
+    assert_null(assumed(m, "water temperature"));
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static void creep_is_the_case_s_or_the_material_s(void **state)
+{
+    (void)state;
+    static const char OWN[] = "creep = ( ( \"0.05 s\", \"1.057e-10 1/Pa\" ), ( \"0.5 "
+                              "s\", \"1.054e-10 1/Pa\" ) ); pressure_rating";
+    static const char UNUSED[] = "creep of pipe walls is read, but";
+    kent_catalogue *c = with_a_plastic();
+    kent_model *m = read_sound(c, MAIN);
+    assert_int_equal(m->creep_count, 1); /* once for both pipes */
+    assert_int_equal(m->pipes[1].creep_count, 1);
+    assert_close(m->creep[m->pipes[1].creep_first].time, 0.05, 1e-15);
+    assert_int_equal(cautions_with(m, UNUSED), 0);
+    kent_model_free(m);
+
+    char *text = replaced(MAIN, "pressure_rating", OWN);
+    m = read_sound(c, text);
+    const kent_pipe *a = &m->pipes[0], *b = &m->pipes[1];
+    assert_int_equal(a->creep_count, 2);
+    assert_close(m->creep[a->creep_first + 1].time, 0.5, 1e-15);
+    assert_close(m->creep[a->creep_first + 1].compliance, 1.054e-10, 1e-12);
+    assert_int_equal(b->creep_count, 1);
+    assert_close(m->creep[b->creep_first].compliance, 1e-10, 1e-12);
+    assert_int_equal(cautions_with(m, UNUSED), 1);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+
+    c = read_catalogue();
+    assert_refused_at(
+        c, text, 10,
+        "pipe \"A\": creep is of plastic walls, and ductile-iron is none; "
+        "leave it out, or name the material");
+    free(text);
+    kent_catalogue_free(c);
+}
+
 static void states_hold_their_levels_and_factors(void **state)
 {
     (void)state;
@@ -215,6 +358,10 @@ int main(void)
         cmocka_unit_test(stations_turns_and_curves_arrive),
         cmocka_unit_test(a_rating_of_the_case_replaces_the_class_s),
         cmocka_unit_test(a_standard_of_another_edition_is_cautioned),
+        cmocka_unit_test(ratings_of_a_warm_plastic_are_reduced),
+        cmocka_unit_test(water_too_warm_for_a_plastic_is_refused),
+        cmocka_unit_test(ratings_by_an_unstated_temperature_say_so),
+        cmocka_unit_test(creep_is_the_case_s_or_the_material_s),
         cmocka_unit_test(states_hold_their_levels_and_factors),
         cmocka_unit_test(a_scenario_starts_from_the_states_it_names),
         cmocka_unit_test(each_fault_gets_its_one_complaint),
