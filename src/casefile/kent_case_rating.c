@@ -74,9 +74,9 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
         own = own || given;
         of_class = of_class || (!given && !isnan(rows[i].of_class));
     }
-    if (isnan(share)) say_warmth(f, record, material);
-    if (of_class && material && material->derating_count > 0)
-        assume_share(f, material, share);
+    if (material && isnan(share)) say_warmth(f, record, material);
+    const bool reduced = of_class && material && material->derating_count > 0;
+    if (reduced) assume_share(f, material, share);
     /* One share serves all three: where the case gives some, the others are reduced
      * here. */
     const double here = own ? share : 1.0;
