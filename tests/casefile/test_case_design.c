@@ -48,27 +48,27 @@ static void a_bearing_is_known_in_one_of_four_ways(void **state)
     (void)state;
     static const struct {
         const char *keys;
-        kent_bearing_route route;
         double constant, gradient, share; /* Pa, Pa/m, - */
         double inside;
+        kent_bearing_route route;
         bool assumes_inside;
     } ROWS[] = {
-        {"allowable_bearing = \"150 kPa\"; factor_inside = 2.0;", KENT_BEARING_CONSTANT,
-         150e3, NAN, NAN, 2.0, false},
-        {"allowable_bearing = \"0 kPa\";", KENT_BEARING_CONSTANT, 0.0, NAN, NAN, 1.0,
+        {"allowable_bearing = \"150 kPa\"; factor_inside = 2.0;", 150e3, NAN, NAN, 2.0,
+         KENT_BEARING_CONSTANT, false},
+        {"allowable_bearing = \"0 kPa\";", 0.0, NAN, NAN, 1.0, KENT_BEARING_CONSTANT,
          false},
         {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ), ( \"2 m\", \"120 kPa\" ) );",
-         KENT_BEARING_BY_DEPTH, NAN, NAN, NAN, 1.0, true},
-        {"bearing_gradient = \"31.4 kPa/m\"; factor_inside = 1.5;",
-         KENT_BEARING_GRADIENT, NAN, 31.4e3, NAN, 1.5, false},
+         NAN, NAN, NAN, 1.0, KENT_BEARING_BY_DEPTH, true},
+        {"bearing_gradient = \"31.4 kPa/m\"; factor_inside = 1.5;", NAN, 31.4e3, NAN,
+         1.5, KENT_BEARING_GRADIENT, false},
         {"passive_share = 0.4; unit_weight = \"19 kN/m^3\"; friction_angle = \"30 "
          "deg\";",
-         KENT_BEARING_PASSIVE, NAN, NAN, 0.4, 1.0, true},
+         NAN, NAN, 0.4, 1.0, KENT_BEARING_PASSIVE, true},
         {"passive_share = 0.4; unit_weight = \"19 kN/m^3\"; cohesion = \"20 kPa\";",
-         KENT_BEARING_PASSIVE, NAN, NAN, 0.4, 1.0, true},
+         NAN, NAN, 0.4, 1.0, KENT_BEARING_PASSIVE, true},
         /* a way of the case's own takes the place of the row's */
-        {"from = \"sand-SP\"; bearing_gradient = \"31.4 kPa/m\";",
-         KENT_BEARING_GRADIENT, NAN, 31.4e3, NAN, 1.0, true},
+        {"from = \"sand-SP\"; bearing_gradient = \"31.4 kPa/m\";", NAN, 31.4e3, NAN,
+         1.0, KENT_BEARING_GRADIENT, true},
     };
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
@@ -196,6 +196,114 @@ static void an_obstacle_lies_sideways(void **state)
     assert_close(o->distance, 1.8, 1e-15);
     assert_close(o->depth, 2.5, 1e-15);
     kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void branches_and_roles_arrive(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        replaced(DESIGN, "fittings = (",
+                 "fittings = ( { at = \"T1\"; type = \"hydrant\"; apart = true;\n"
+                 "  branch = { direction = [ 0.0, 2.0, 0.0 ]; outside_diameter = \"118 "
+                 "mm\"; inside_diameter = \"100 mm\"; joint = \"mechanical\"; end = "
+                 "\"valve\"; }; },");
+    kent_model *m = read_sound(c, text);
+    const kent_fitting_note *n = &m->notes[0];
+    assert_int_equal(n->type, -1); /* geometry's */
+    assert_int_equal(n->role, KENT_ROLE_HYDRANT);
+    assert_true(n->apart);
+    assert_close(n->branch.direction.y, 1.0, 1e-15);
+    assert_close(n->branch.outside_diameter, 0.118, 1e-12);
+    assert_close(n->branch.inside_diameter, 0.100, 1e-12);
+    assert_int_equal(n->branch.joint, KENT_MECHANICAL);
+    assert_int_equal(n->branch.end, KENT_BRANCH_VALVE);
+    assert_null(assumed(m, "joint of branches that name none"));
+    kent_model_free(m);
+    free(text);
+
+    static const struct {
+        const char *word;
+        kent_branch_end end;
+    } ENDS[] = {{"blank", KENT_BRANCH_BLANK}, {"valve", KENT_BRANCH_VALVE}};
+    for (size_t i = 0; i < sizeof ENDS / sizeof ENDS[0]; i++) {
+        char piece[200];
+        (void)snprintf(piece, sizeof piece,
+                       "fittings = ( { at = \"T1\"; branch = { direction = [ 0.0, 1.0, "
+                       "0.0 ]; outside_diameter = \"118 mm\"; end = \"%s\"; }; },",
+                       ENDS[i].word);
+        text = replaced(DESIGN, "fittings = (", piece);
+        m = read_sound(c, text);
+        assert_int_equal(m->notes[0].branch.end, ENDS[i].end);
+        assert_int_equal(m->notes[0].branch.joint, KENT_FLANGED);
+        assert_true(isnan(m->notes[0].branch.inside_diameter));
+        assert_string_equal(assumed(m, "joint of branches that name none"),
+                            "flanged\tthe usual joint of a branch");
+        assert_null(assumed(m, "bore of open branches that state none"));
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void an_open_branch_without_a_bore_is_as_wide_as_it_is(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text = replaced(
+        DESIGN, "fittings = (",
+        "outflows = ( { at = \"T1\"; flow = \"10 L/s\"; } );\n"
+        "fittings = ( { at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; "
+        "outside_diameter = \"118 mm\"; end = \"open\"; }; },");
+    kent_model *m = read_sound(c, text);
+    assert_int_equal(m->notes[0].branch.end, KENT_BRANCH_OPEN);
+    assert_string_equal(assumed(m, "bore of open branches that state none"),
+                        "the outside diameter\tinside_diameter not given");
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static void each_word_of_a_role_is_read(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *word;
+        kent_role role;
+    } ROWS[] = {{"tapping-tee", KENT_ROLE_TAPPING},
+                {"hydrant", KENT_ROLE_HYDRANT},
+                {"air-valve-tee", KENT_ROLE_AIR_VALVE},
+                {"washout-tee", KENT_ROLE_WASHOUT}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char piece[240];
+        (void)snprintf(
+            piece, sizeof piece,
+            "fittings = ( { at = \"T1\"; type = \"%s\"; branch = { direction "
+            "= [ 0.0, 0.0, 1.0 ]; outside_diameter = \"118 mm\"; end = "
+            "\"blank\"; }; },",
+            ROWS[i].word);
+        char *text = replaced(DESIGN, "fittings = (", piece);
+        kent_model *m = read_sound(c, text);
+        assert_int_equal(m->notes[0].role, ROWS[i].role);
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void points_may_be_held_together(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        replaced(DESIGN, "at = \"B1\";", "at = \"B1\"; together_with = [ \"E1\" ];");
+    kent_model *m = read_sound(c, text);
+    assert_int_equal(m->notes[0].together_count, 1);
+    assert_int_equal(m->together[m->notes[0].together_first], 3);
+    kent_model_free(m);
+    free(text);
     kent_catalogue_free(c);
 }
 
@@ -411,6 +519,10 @@ int main(void)
         cmocka_unit_test(a_bearing_that_cannot_be_known_is_refused),
         cmocka_unit_test(zones_of_ground_arrive),
         cmocka_unit_test(an_obstacle_lies_sideways),
+        cmocka_unit_test(branches_and_roles_arrive),
+        cmocka_unit_test(an_open_branch_without_a_bore_is_as_wide_as_it_is),
+        cmocka_unit_test(each_word_of_a_role_is_read),
+        cmocka_unit_test(points_may_be_held_together),
         cmocka_unit_test(tests_are_stated_or_found_by_a_rule),
         cmocka_unit_test(each_fault_gets_its_one_complaint),
         cmocka_unit_test(a_surge_to_test_by_needs_scenarios),
