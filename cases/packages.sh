@@ -5,7 +5,7 @@
 
 # shellcheck disable=SC2034  # for whoever sources this
 PACKAGES_BUILD="gcc libc6-dev make cmake pkg-config libsundials-dev libsuitesparse-dev
-libconfig-dev libudunits2-dev libjansson-dev"
+libconfig-dev libcsv-dev libudunits2-dev libjansson-dev"
 
 # shellcheck disable=SC2034
 PACKAGES_TEST="libcmocka-dev clang clang-tidy-14 clang-format-14 locales

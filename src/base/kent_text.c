@@ -94,6 +94,26 @@ size_t kent_text_columns(const char *utf8)
     return columns;
 }
 
+size_t kent_text_number(const char *text)
+{
+    static const char DIGITS[] = "0123456789";
+    size_t n = text[0] == '+' || text[0] == '-' ? 1 : 0;
+    const size_t whole = strspn(text + n, DIGITS);
+    n += whole;
+    size_t part = 0;
+    if (text[n] == '.') {
+        part = strspn(text + n + 1, DIGITS);
+        n += 1 + part;
+    }
+    if (whole + part == 0) return 0;
+    if (text[n] == 'e' || text[n] == 'E') {
+        const size_t sign = text[n + 1] == '+' || text[n + 1] == '-' ? 1 : 0;
+        const size_t power = strspn(text + n + 1 + sign, DIGITS);
+        if (power > 0) n += 1 + sign + power;
+    }
+    return n;
+}
+
 size_t kent_text_distance(const char *a, const char *b)
 {
     enum { LONGEST = 128 }; /* names; what lies beyond counts as all different */

@@ -25,6 +25,9 @@ size_t kent_text_sequence(const char *utf8);
  */
 size_t kent_text_columns(const char *utf8);
 
+/* Length of a decimal number at the start of text, 0: none. No hexadecimal, no nan. */
+size_t kent_text_number(const char *text);
+
 /* Smallest number of single-letter edits that turns a into b (for "did you mean"). */
 size_t kent_text_distance(const char *a, const char *b);
 

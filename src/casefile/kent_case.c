@@ -86,11 +86,35 @@ static const struct {
 #undef LIST
 };
 
+/* The table whose rows come after a list, or NULL. */
+static kent_rows *table_of(const kent_filling *f, size_t which)
+{
+    return LISTS[which].shelf == KENT_SHELF_POINTS  ? f->points_table
+           : LISTS[which].shelf == KENT_SHELF_PIPES ? f->pipes_table
+                                                    : NULL;
+}
+
+static void fill_one(kent_filling *f, size_t which, const kent_twig *twig,
+                     size_t position, size_t index)
+{
+    kent_reader *r = &f->reader;
+    kent_record record;
+    kent_record_read(r, twig, LISTS[which].group, "", position, &record);
+    LISTS[which].fill(f, &record, index);
+    if (LISTS[which].name) {
+        kent_reader_shelve(r, (kent_shelf)LISTS[which].shelf,
+                           kent_record_field(&record, LISTS[which].name)->text,
+                           (int)index, record.place);
+    }
+}
+
 static void fill_list(kent_filling *f, size_t which)
 {
     kent_reader *r = &f->reader;
     const kent_twig *list = kent_record_field(&f->root, LISTS[which].list)->twig;
-    const size_t count = list ? kent_twig_count(list) : 0;
+    kent_rows *rows = table_of(f, which);
+    const size_t listed = list ? kent_twig_count(list) : 0;
+    const size_t count = listed + kent_rows_count(rows);
     /* Soils of the catalogue that are named come after the case's own. */
     const size_t more =
         LISTS[which].shelf == KENT_SHELF_SOILS ? f->catalogue->soil_count : 0;
@@ -101,16 +125,16 @@ static void fill_list(kent_filling *f, size_t which)
     }
     memcpy((char *)f->model + LISTS[which].array, &array, sizeof array);
     memcpy((char *)f->model + LISTS[which].count, &count, sizeof count);
-    for (size_t i = 0; i < count && !r->failed; i++) {
-        kent_record record;
+    for (size_t i = 0; i < listed && !r->failed; i++) {
         const kent_twig *twig = kent_record_element(r, list, "", i);
-        if (!twig) continue;
-        kent_record_read(r, twig, LISTS[which].group, "", i + 1, &record);
-        LISTS[which].fill(f, &record, i);
-        if (LISTS[which].name) {
-            kent_reader_shelve(r, (kent_shelf)LISTS[which].shelf,
-                               kent_record_field(&record, LISTS[which].name)->text,
-                               (int)i, record.place);
+        if (twig) fill_one(f, which, twig, i + 1, i);
+    }
+    for (size_t i = listed; i < count && !r->failed; i++) {
+        const kent_twig *twig = kent_rows_group(r, rows, i - listed);
+        if (twig) {
+            fill_one(f, which, twig, i - listed + 1, i);
+        } else {
+            r->failed = true;
         }
     }
     if (LISTS[which].shelf != NO_SHELF) {
@@ -134,8 +158,9 @@ static kent_status copy_files(const kent_tree *tree, kent_model *m)
     return KENT_OK;
 }
 
-static void fill_all(kent_filling *f, const char *path)
+static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
 {
+    const size_t before = f->reader.complaints->count;
     kent_reader *r = &f->reader;
     kent_record_read(r, kent_tree_root(r->tree), "case", "", 0, &f->root);
     r->system = kent_record_field(&f->root, "units")->index == 1 ? KENT_US : KENT_SI;
@@ -143,10 +168,12 @@ static void fill_all(kent_filling *f, const char *path)
     kent_fill_head(f, path);
     kent_fill_water(f);
     kent_fill_site(f);
+    const kent_status status = kent_fill_tables(f, err);
+    if (status != KENT_OK) return status; /* its rows are not to be had */
     for (size_t i = 0; i < sizeof LISTS / sizeof LISTS[0] && !r->failed; i++) {
         fill_list(f, i);
     }
-    if (r->failed) return;
+    if (r->failed) return KENT_E_NOMEM;
     kent_fill_rules(f);
     kent_fill_ground(f);
     kent_fill_loads(f);
@@ -158,6 +185,10 @@ static void fill_all(kent_filling *f, const char *path)
             "the case has nothing to work on; it needs pipes, or fittings with "
             "ports");
     }
+    if (r->failed || f->model->assumed.failed || f->model->cautions.failed) {
+        return KENT_E_NOMEM;
+    }
+    return r->complaints->count > before ? KENT_E_INPUT : copy_files(r->tree, f->model);
 }
 
 kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
@@ -165,7 +196,6 @@ kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
                            kent_complaints *complaints, kent_error *err)
 {
     assert(path && catalogue && out && complaints && err);
-    const size_t before = complaints->count;
     kent_tree *tree = NULL;
     kent_filling *f = kent_alloc(1, sizeof *f);
     kent_status status = f ? KENT_OK : kent_error_nomem(err);
@@ -180,16 +210,8 @@ kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
     if (!status) status = kent_units_new(&f->reader.units, err);
     if (status) goto done;
     f->reader.tree = tree;
-    status = copy_files(tree, f->model);
-    if (!status) {
-        kent_catalogue_shelve(catalogue, &f->reader);
-        fill_all(f, path);
-        if (f->reader.failed || f->model->assumed.failed || f->model->cautions.failed) {
-            status = KENT_E_NOMEM;
-        } else if (complaints->count > before) {
-            status = KENT_E_INPUT;
-        }
-    }
+    kent_catalogue_shelve(catalogue, &f->reader);
+    status = fill_all(f, path, err);
     if (!status) status = kent_model_derive(f->model, complaints);
     if (status == KENT_E_NOMEM) (void)kent_error_nomem(err);
     if (!status) {
@@ -200,6 +222,8 @@ done:
     kent_complaints_sort(complaints);
     if (f) {
         kent_reader_clear(&f->reader);
+        kent_rows_free(f->points_table);
+        kent_rows_free(f->pipes_table);
         kent_units_free(f->reader.units);
         kent_model_free(f->model);
     }

@@ -4,14 +4,16 @@
 
 #include "kent_case.h"
 #include "kent_catalogue_internal.h"
+#include "kent_rows.h"
 
 typedef struct kent_filling {
     kent_reader reader;
     const kent_catalogue *catalogue;
     const kent_system *shown; /* NULL: the case's own */
     kent_model *model;
-    kent_record root;      /* the case's own group */
-    size_t route_capacity; /* of model->route, and so on */
+    kent_record root;                      /* the case's own group */
+    kent_rows *points_table, *pipes_table; /* NULL: the case names none */
+    size_t route_capacity;                 /* of model->route, and so on */
     size_t event_capacity;
     size_t law_capacity;
     size_t port_capacity;
@@ -26,6 +28,9 @@ typedef struct kent_filling {
  * it was there. */
 bool kent_fill_group(kent_filling *f, const kent_record *parent, const char *key,
                      kent_record *out);
+
+/* Reads the tables that the case names. Fails like kent_rows_read. */
+kent_status kent_fill_tables(kent_filling *f, kent_error *err);
 
 /* What stands once in a case; each notes what it assumes. Ground and loads come after
  * the lists that they refer to. */

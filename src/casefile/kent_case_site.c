@@ -72,8 +72,9 @@ void kent_fill_site(kent_filling *f)
         if (style >= 0) f->reader.station_style = (kent_station_style)style;
     }
     /* Only the vapour limit of a surge knows the weather. */
-    if (kent_record_has(&f->root, "pipes") &&
-        !(there && kent_record_has(&r, "altitude"))) {
+    const bool pipes =
+        kent_record_has(&f->root, "pipes") || kent_record_has(&f->root, "pipes_file");
+    if (pipes && !(there && kent_record_has(&r, "altitude"))) {
         kent_fill_assume_value(f, "barometric pressure", m->barometric, KENT_PRESSURE,
                                "no altitude given: sea level");
     }

@@ -678,6 +678,24 @@ void kent_reader_shelve(kent_reader *r, kent_shelf shelf, const char *id, int in
     if (kent_directory_add(&r->shelves[shelf], id, index, place) != 0) r->failed = true;
 }
 
+static void complain_twice(kent_reader *r, kent_shelf shelf, const kent_entry *first,
+                           const kent_entry *second)
+{
+    const char *file = kent_tree_file(r->tree, (size_t)second->place.file);
+    char at[320];
+    assert(first->place.file >= 0); /* no shelf has rows of the catalogue and others */
+    if (first->place.file == second->place.file) {
+        (void)snprintf(at, sizeof at, "at line %d", first->place.line);
+    } else {
+        (void)snprintf(at, sizeof at, "at %s:%d",
+                       kent_tree_file(r->tree, (size_t)first->place.file),
+                       first->place.line);
+    }
+    kent_complain(r->complaints, file, second->place.line,
+                  "%s \"%.60s\" is given twice, first %s", SHELVES[shelf].word,
+                  second->id, at);
+}
+
 void kent_reader_close_shelf(kent_reader *r, kent_shelf shelf)
 {
     kent_directory *d = &r->shelves[shelf];
@@ -686,10 +704,7 @@ void kent_reader_close_shelf(kent_reader *r, kent_shelf shelf)
         const kent_entry *first = &d->entries[i - 1];
         const kent_entry *second = &d->entries[i];
         if (strcmp(first->id, second->id) != 0 || second->place.file < 0) continue;
-        kent_complain(
-            r->complaints, kent_tree_file(r->tree, (size_t)second->place.file),
-            second->place.line, "%s \"%.60s\" is given twice, first at line %d",
-            SHELVES[shelf].word, second->id, first->place.line);
+        complain_twice(r, shelf, first, second);
     }
 }
 

@@ -37,7 +37,7 @@ typedef enum kent_station_style {
 } kent_station_style;
 
 typedef struct kent_reader {
-    const kent_tree *tree;
+    kent_tree *tree;
     kent_units *units; /* the caller's: one database serves every file */
     kent_complaints *complaints;
     kent_system system; /* of examples in messages */

@@ -9,9 +9,9 @@
 
 struct kent_tree {
     kent_files files;
-    kent_twig *twigs; /* [twig_count]; the root first */
+    kent_twig *twigs; /* the root first, children of one together */
     char *texts;      /* [text_size] of names and texts, each ending in NUL */
-    size_t twig_count, text_size;
+    size_t text_size;
 };
 
 static kent_place place_of_line(const kent_scan *scan, int line)
@@ -104,20 +104,6 @@ static size_t child_count(const config_setting_t *setting)
                                                 : 0;
 }
 
-/* Adds what a setting and all below it need. As deep as the scanner lets them nest. */
-static void measure(kent_tree *t, const config_setting_t *setting)
-{
-    const char *name = config_setting_name(setting);
-    t->twig_count++;
-    t->text_size += name ? strlen(name) + 1 : 0;
-    if (config_setting_type(setting) == CONFIG_TYPE_STRING) {
-        t->text_size += strlen(config_setting_get_string(setting)) + 1;
-    }
-    for (size_t i = 0; i < child_count(setting); i++) {
-        measure(t, config_setting_get_elem(setting, (unsigned)i));
-    }
-}
-
 static const char *keep_text(kent_tree *t, const char *text)
 {
     char *copy = t->texts + t->text_size;
@@ -162,41 +148,68 @@ static double number_of(const config_setting_t *setting)
     }
 }
 
-/* Fills *out, and its children into the twigs behind those taken already. */
-static void take(kent_tree *t, const kent_scan *scan, const config_setting_t *setting,
-                 kent_twig *out)
+/* All settings, level by level from the root: the children of one stand together, in
+ * the order of their parents. */
+typedef struct levels {
+    const config_setting_t **settings; /* [count] */
+    size_t count, capacity;
+    size_t text_size; /* of their names and texts */
+} levels;
+
+static kent_status list_levels(const config_setting_t *root, levels *l, kent_error *err)
 {
-    const char *name = config_setting_name(setting);
-    const size_t count = child_count(setting);
-    kent_twig *children = &t->twigs[t->twig_count];
-    t->twig_count += count;
-    *out = (kent_twig){
-        .type = type_of(setting),
-        .place = place_of_line(scan, (int)config_setting_source_line(setting)),
-        .name = name ? keep_text(t, name) : "",
-        .number = number_of(setting),
-        .children = children,
-        .count = count};
-    if (out->type == KENT_TWIG_TEXT) {
-        out->text = keep_text(t, config_setting_get_string(setting));
-    }
-    for (size_t i = 0; i < count; i++) {
-        take(t, scan, config_setting_get_elem(setting, (unsigned)i), &children[i]);
+    const config_setting_t *next = root;
+    for (size_t parent = 0, child = 0;;) {
+        const char *name = config_setting_name(next);
+        if (kent_grow((void **)&l->settings, &l->capacity, l->count + 1,
+                      sizeof(void *)) != 0) {
+            return kent_error_nomem(err);
+        }
+        l->settings[l->count++] = next;
+        l->text_size += name ? strlen(name) + 1 : 0;
+        if (config_setting_type(next) == CONFIG_TYPE_STRING) {
+            l->text_size += strlen(config_setting_get_string(next)) + 1;
+        }
+        while (parent < l->count && child == child_count(l->settings[parent])) {
+            parent++;
+            child = 0;
+        }
+        if (parent == l->count) return KENT_OK;
+        next = config_setting_get_elem(l->settings[parent], (unsigned)child++);
     }
 }
 
 static kent_status take_all(kent_tree *t, const kent_scan *scan, const config_t *config,
                             kent_error *err)
 {
-    const config_setting_t *root = config_root_setting(config);
-    measure(t, root);
-    t->twigs = kent_alloc(t->twig_count, sizeof *t->twigs);
-    t->texts = kent_alloc(t->text_size, 1);
-    if (!t->twigs || !t->texts) return kent_error_nomem(err);
-    t->twig_count = 1;
-    t->text_size = 0;
-    take(t, scan, root, &t->twigs[0]);
-    return KENT_OK;
+    levels l = {0};
+    kent_status status = list_levels(config_root_setting(config), &l, err);
+    if (status != KENT_OK) goto done;
+    t->twigs = kent_alloc(l.count, sizeof *t->twigs);
+    t->texts = kent_alloc(l.text_size, 1);
+    if (!t->twigs || !t->texts) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
+    const kent_twig *children = &t->twigs[1];
+    for (size_t i = 0; i < l.count; i++) {
+        const config_setting_t *s = l.settings[i];
+        const char *name = config_setting_name(s);
+        t->twigs[i] = (kent_twig){
+            .type = type_of(s),
+            .place = place_of_line(scan, (int)config_setting_source_line(s)),
+            .name = name ? keep_text(t, name) : "",
+            .number = number_of(s),
+            .children = children,
+            .count = child_count(s)};
+        if (t->twigs[i].type == KENT_TWIG_TEXT) {
+            t->twigs[i].text = keep_text(t, config_setting_get_string(s));
+        }
+        children += child_count(s);
+    }
+done:
+    free((void *)l.settings);
+    return status;
 }
 
 kent_status kent_tree_read(const char *path, kent_tree **out,

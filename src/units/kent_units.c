@@ -267,27 +267,6 @@ static void examples(kent_kind kind, char *out, size_t size)
     }
 }
 
-/* Length of a decimal number at the start of text, 0: none. No hexadecimal, no nan. */
-static size_t number_length(const char *text)
-{
-    static const char DIGITS[] = "0123456789";
-    size_t n = text[0] == '+' || text[0] == '-' ? 1 : 0;
-    const size_t whole = strspn(text + n, DIGITS);
-    n += whole;
-    size_t part = 0;
-    if (text[n] == '.') {
-        part = strspn(text + n + 1, DIGITS);
-        n += 1 + part;
-    }
-    if (whole + part == 0) return 0;
-    if (text[n] == 'e' || text[n] == 'E') {
-        const size_t sign = text[n + 1] == '+' || text[n + 1] == '-' ? 1 : 0;
-        const size_t power = strspn(text + n + 1 + sign, DIGITS);
-        if (power > 0) n += 1 + sign + power;
-    }
-    return n;
-}
-
 /* Whether the text can be a unit: known marks, parentheses in pairs, and every digit is
  * an exponent or part of a name: UDUNITS would multiply by any other number, so that
  * "12 ft 6 in" became an area. A leading "1/" is right. */
@@ -477,7 +456,7 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
     for (size_t n = strlen(own); n > 0 && isspace((unsigned char)own[n - 1]); n--) {
         own[n - 1] = '\0';
     }
-    const size_t digits = number_length(own);
+    const size_t digits = kent_text_number(own);
     const char *unit = own + digits;
     const bool has_comma = unit[0] == ',';
     while (isspace((unsigned char)*unit)) {

@@ -1,7 +1,7 @@
 /* Every allocation of a reading refused once: "out of memory", nothing half-made, and
  * (with the sanitizer) nothing lost. */
 #include "kent_alloc_fail.h"
-#include "case_text.h"
+#include "table_folder.h"
 
 typedef struct reading {
     const kent_catalogue *catalogue;
@@ -53,6 +53,25 @@ static void each_refused_allocation_of_a_case_is_out_of_memory(void **state)
     kent_catalogue_free(c);
 }
 
+static void each_refused_allocation_of_tables_is_out_of_memory(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    reading r = {.catalogue = c};
+    char folder[] = "/tmp/kent-table-XXXXXX";
+    assert_non_null(mkdtemp(folder));
+    write_into(folder, "case.cfg", TABLE_CASE, strlen(TABLE_CASE));
+    write_into(folder, "points.csv", POINTS_TABLE, strlen(POINTS_TABLE));
+    write_into(folder, "pipes.csv", PIPES_TABLE, strlen(PIPES_TABLE));
+    (void)snprintf(r.path, sizeof r.path, "%s/case.cfg", folder);
+    assert_true(kent_allocations_needed(read_the_case, &r) > 40);
+    write_into(folder, "case.cfg", NULL, 0);
+    write_into(folder, "points.csv", NULL, 0);
+    write_into(folder, "pipes.csv", NULL, 0);
+    assert_int_equal(rmdir(folder), 0);
+    kent_catalogue_free(c);
+}
+
 static void each_refused_allocation_of_the_catalogue_is_out_of_memory(void **state)
 {
     (void)state;
@@ -64,6 +83,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(each_refused_allocation_of_a_case_is_out_of_memory),
+        cmocka_unit_test(each_refused_allocation_of_tables_is_out_of_memory),
         cmocka_unit_test(each_refused_allocation_of_the_catalogue_is_out_of_memory),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -20,7 +20,7 @@ OUTSIDE = {
     "base": {"pthread.h", "stdatomic.h", "unistd.h", "fcntl.h", "dirent.h",
              "sys/file.h", "sys/stat.h", "fts.h"},
     "units": {"udunits2.h", "locale.h"},
-    "casefile": {"libconfig.h", "locale.h", "sys/stat.h", "unistd.h", "dirent.h",
+    "casefile": {"libconfig.h", "csv.h", "locale.h", "sys/stat.h", "unistd.h", "dirent.h",
                  "libgen.h"},
     "steady": {"kinsol/kinsol.h", "nvector/nvector_serial.h", "klu.h",
                "sundials/sundials_types.h", "sundials/sundials_linearsolver.h",
