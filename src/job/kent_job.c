@@ -1,5 +1,6 @@
 #include "kent_job.h"
 
+#include "kent_alarm.h"
 #include "kent_limits.h"
 #include "kent_scenario_run.h"
 
@@ -203,6 +204,8 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     kent_status status = choose_marches(&plan, options, err);
     if (!status) status = solve_states(m, r, err);
     if (!status) {
+        kent_alarms_raise(m, r->steadies, r->steady_count, KENT_ALARM_RUN,
+                          &r->cautions);
         status = kent_recorder_new(m, r->steadies, &plan.recorder, err);
     }
     if (!status) status = kent_viewpoints_new(m, plan.recorder, &plan.views, err);

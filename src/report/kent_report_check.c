@@ -1,3 +1,4 @@
+#include "kent_alarm.h"
 #include "kent_sink.h"
 #include "kent_view.h"
 
@@ -156,13 +157,23 @@ static void say_assumed(const kent_view *v)
     kent_text_clear(&words);
 }
 
+/* Those of the case, then the alarms. */
 static void say_cautions(const kent_view *v)
 {
-    const kent_notes *cautions = &v->model->cautions;
-    if (cautions->count > 0) kent_text_add(v->out, "\nCautions\n");
+    const kent_model *m = v->model;
+    const kent_notes *cautions = &m->cautions;
+    kent_notes alarms = {0};
+    kent_alarms_raise(m, v->steadies, v->steadies ? m->state_count : 0,
+                      KENT_ALARM_CHECK, &alarms);
+    if (cautions->count + alarms.count > 0) kent_text_add(v->out, "\nCautions\n");
     for (size_t i = 0; i < cautions->count; i++) {
         kent_table_paragraph(v->out, v->limit, "!  ", cautions->text[i]);
     }
+    for (size_t i = 0; i < alarms.count; i++) {
+        kent_table_paragraph(v->out, v->limit, "!  ", alarms.text[i]);
+    }
+    v->out->failed = v->out->failed || alarms.failed;
+    kent_notes_clear(&alarms);
 }
 
 /* The grid a run would march on; one that cannot be planned is the run's to complain
