@@ -2,6 +2,8 @@
 
 #include <math.h>
 
+static const double ATMOSPHERE = 101325.0; /* Pa */
+
 /* 2.3 */
 double kent_wave_equivalent_thickness(const kent_wall *wall)
 {
@@ -33,6 +35,18 @@ double kent_wave_support_factor(const kent_wall *wall, kent_axial_support suppor
     const double d = wall->bore;
     const double e = kent_wave_equivalent_thickness(wall);
     return 2.0 * e / d * (1.0 + wall->poisson) + d / (d + e) * share;
+}
+
+/* 2.6 .. 2.8 */
+kent_mixture kent_wave_mixture(double density, double bulk_modulus, double gas_content,
+                               double pressure)
+{
+    const double x = gas_content * ATMOSPHERE / pressure;
+    return (kent_mixture){
+        .gas_share = x,
+        .density = (1.0 - x) * density,
+        .bulk_modulus = 1.0 / ((1.0 - x) / bulk_modulus + x / pressure),
+    };
 }
 
 /* 2.1, 2.2 */

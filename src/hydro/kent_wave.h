@@ -28,6 +28,19 @@ double kent_wave_support_factor(const kent_wall *wall, kent_axial_support suppor
 /* m, wall and lining as one wall of the structural material: e + lining E_l/E. */
 double kent_wave_equivalent_thickness(const kent_wall *wall);
 
+typedef struct kent_mixture { /* of water and free gas, at one pressure */
+    double gas_share;         /* -, gas by volume */
+    double density;           /* kg/m3 */
+    double bulk_modulus;      /* Pa */
+} kent_mixture;
+
+/* Water of a density (kg/m3) and bulk modulus (Pa) with free gas: gas_content, by
+ * volume at one atmosphere (0 .. 0.05; 0: none), at a pressure (Pa absolute, > 0).
+ * Isothermal. fails: never, NaN in gives NaN out. source
+ * docs/theory/02-wave-speed.md, 2.6 .. 2.8 */
+kent_mixture kent_wave_mixture(double density, double bulk_modulus, double gas_content,
+                               double pressure);
+
 /* m/s. density kg/m3, bulk_modulus Pa. fails: never, NaN in gives NaN out. */
 double kent_wave_speed(const kent_wall *wall, kent_axial_support support, bool thin,
                        double density, double bulk_modulus);

@@ -608,6 +608,12 @@ bool kent_model_is_valid(const kent_model *m);
 /* m: level of the pipe's centre line at a chainage of a span. */
 double kent_span_level(const kent_model *m, const kent_span *span, double chainage);
 
+/* Pa absolute, at the middle of a span with all water at rest under the highest fixed
+ * level; barometric above it. And what the water there is with the case's free gas: the
+ * water itself where there is none. */
+double kent_span_still_pressure(const kent_model *m, const kent_span *span);
+kent_mixture kent_span_mixture(const kent_model *m, const kent_span *span);
+
 /* Head loss along a whole span (m, sign of the flow: friction and spread minor losses),
  * and its derivative with respect to flow. The surge's reaches add up to the same. */
 double kent_span_loss(const kent_model *m, const kent_span *span, double flow,

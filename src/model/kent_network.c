@@ -178,6 +178,24 @@ static void group_ends(kent_model *m)
     }
 }
 
+/* Where the free gas of the case slows a wave. */
+static void note_gas(kent_model *m)
+{
+    bool slows = false;
+
+    if (!(m->gas_content > 0.0)) return;
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        slows = slows || isnan(m->pipes[i].wave_speed);
+    }
+    if (!slows) return; /* every speed is given */
+    kent_notes_add(
+        &m->cautions,
+        "free gas of %g %% by volume at one atmosphere slows the waves: each "
+        "pipe's speed is that at the pressure of still water at its middle, "
+        "and stays so while the pressure changes",
+        1e2 * m->gas_content);
+}
+
 kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *complaints)
 {
     /* At most one span for each stop after a route's first, and two nodes a stop. */
@@ -194,6 +212,7 @@ kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *com
     for (size_t i = 0; i < m->pipe_count; i++) {
         cut_pipe(m, l, (int)i, complaints);
     }
+    note_gas(m);
     group_ends(m);
     return check_span_ids(m, complaints);
 }

@@ -5,6 +5,29 @@
 
 static const double PI = 3.14159265358979323846;
 
+double kent_span_still_pressure(const kent_model *m, const kent_span *span)
+{
+    double highest = -INFINITY; /* m */
+
+    for (size_t i = 0; i < m->fixed_level_count; i++) {
+        highest = fmax(highest, m->fixed_levels[i].level);
+    }
+    const double depth = highest - kent_span_level(m, span, 0.5 * span->length);
+    return m->barometric + m->water.density * m->gravity * fmax(0.0, depth);
+}
+
+kent_mixture kent_span_mixture(const kent_model *m, const kent_span *span)
+{
+    if (!(m->gas_content > 0.0)) { /* to the last bit */
+        return (kent_mixture){
+            .density = m->water.density,
+            .bulk_modulus = m->water.bulk_modulus,
+        };
+    }
+    return kent_wave_mixture(m->water.density, m->water.bulk_modulus, m->gas_content,
+                             kent_span_still_pressure(m, span));
+}
+
 void kent_span_fill(const kent_model *m, kent_span *span)
 {
     const kent_pipe *pipe = &m->pipes[span->pipe];
@@ -28,8 +51,9 @@ void kent_span_fill(const kent_model *m, kent_span *span)
                                 .poisson = pipe->poisson,
                                 .lining = pipe->lining,
                                 .lining_modulus = pipe->lining_modulus};
+        const kent_mixture mixture = kent_span_mixture(m, span);
         span->wave_speed = kent_wave_speed(&wall, pipe->axial_support, pipe->thin_wall,
-                                           m->water.density, m->water.bulk_modulus);
+                                           mixture.density, mixture.bulk_modulus);
     } else {
         span->wave_speed = pipe->wave_speed;
     }

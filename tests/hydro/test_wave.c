@@ -154,6 +154,31 @@ static void reinforced_concrete_counts_as_one_wall_of_steel(void **state)
                  1113.4, 5e-4);
 }
 
+/* Derived from the compliances of water and of an isothermal gas, 1/K = (1 - x)/K_w +
+ * x/p, and the density of the water in it; rigid pipe, 2.2 GPa, 998 kg/m3. x by volume
+ * where the wave is. */
+static void free_gas_slows_the_wave_in_a_rigid_pipe(void **state)
+{
+    (void)state;
+    static const struct {
+        double pressure, share, speed; /* Pa, -, m/s */
+    } rows[] = {{101325.0, 1e-4, 833.8}, {101325.0, 1e-3, 311.7},
+                {101325.0, 1e-2, 101.0}, {1.0e6, 1e-4, 1344.0},
+                {1.0e6, 1e-3, 830.5},    {1.0e6, 1e-2, 311.2}};
+
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        const double p = rows[i].pressure;
+        const double content = rows[i].share * p / 101325.0; /* at one atmosphere */
+        const kent_mixture mix = kent_wave_mixture(998.0, 2.2e9, content, p);
+        assert_close(mix.gas_share, rows[i].share, 1e-12);
+        assert_close(bare_speed(0.5, 0.01, INFINITY, mix.density, mix.bulk_modulus),
+                     rows[i].speed, 5e-4);
+    }
+    const kent_mixture none = kent_wave_mixture(998.0, 2.2e9, 0.0, 101325.0);
+    assert_close(none.bulk_modulus, 2.2e9, 1e-15);
+    assert_close(none.density, 998.0, 0.0);
+}
+
 static void the_thick_form_goes_over_into_the_thin_one(void **state)
 {
     (void)state;
@@ -201,6 +226,7 @@ int main(void)
         cmocka_unit_test(axial_support_counts_in_steel),
         cmocka_unit_test(thick_walls_slow_the_wave_in_concrete),
         cmocka_unit_test(reinforced_concrete_counts_as_one_wall_of_steel),
+        cmocka_unit_test(free_gas_slows_the_wave_in_a_rigid_pipe),
         cmocka_unit_test(the_thick_form_goes_over_into_the_thin_one),
         cmocka_unit_test(a_lining_stiffens_and_nothing_gives_nothing),
     };

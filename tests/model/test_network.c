@@ -3,6 +3,7 @@
 #include "kent_check.h"
 
 #include <math.h>
+#include <string.h>
 
 /* R --- P --- T --- E, with a branch T --- D: the main passes T in mid-route. */
 static kent_build branched(void)
@@ -204,6 +205,46 @@ static void the_wave_speed_comes_from_the_wall_where_none_is_given(void **state)
     kent_build_clear(&b);
 }
 
+/* By hand: 0.1 % at one atmosphere under 92 - 40 m of water at the middle, gauge. The
+ * wall yields as before. Above the highest level the pressure is barometric. */
+static void free_gas_slows_waves_by_the_still_pressure_of_each_span(void **state)
+{
+    (void)state;
+    for (int high = 0; high < 2; high++) {
+        const double z = high ? 120.0 : 30.0;
+        kent_build b = kent_build_new();
+        (void)kent_build_point(&b, "R", 0.0, 0.0, z);
+        (void)kent_build_point(&b, "E", 800.0, 0.0, z + 20.0);
+        (void)kent_build_pipe(&b, "A", "R E", 0.6, (double)NAN);
+        (void)kent_build_fixed_level(&b, "R", 92.0);
+        (void)kent_build_fixed_level(&b, "E", 60.0);
+        b.model->pipes[0].thin_wall = true;
+        b.model->gas_content = 1e-3;
+        kent_build_derive(&b);
+        const double p = 101325.0 + (high ? 0.0 : 1000.0 * 9.80665 * 52.0);
+        const double x = 1e-3 * 101325.0 / p;
+        const double k = 1.0 / ((1.0 - x) / 2.2e9 + x / p);
+        const double want =
+            sqrt(k / (1000.0 * (1.0 - x))) / sqrt(1.0 + k * 0.6 / (170.0e9 * 0.01));
+        assert_close(kent_span_still_pressure(b.model, &b.model->spans[0]), p, 1e-12);
+        assert_close(b.model->spans[0].wave_speed, want, 1e-12);
+        assert_int_equal(b.model->cautions.count, 1);
+        assert_non_null(strstr(b.model->cautions.text[0], "free gas of 0.1 %"));
+        kent_build_clear(&b);
+    }
+}
+
+static void a_given_wave_speed_stays_whatever_gas_there_is(void **state)
+{
+    (void)state;
+    kent_build b = branched();
+    b.model->gas_content = 1e-3;
+    kent_build_derive(&b);
+    assert_close(b.model->spans[0].wave_speed, b.model->pipes[0].wave_speed, 0.0);
+    assert_int_equal(b.model->cautions.count, 0);
+    kent_build_clear(&b);
+}
+
 static void deriving_twice_gives_the_same(void **state)
 {
     (void)state;
@@ -230,6 +271,8 @@ int main(void)
         cmocka_unit_test(the_level_between_points_is_a_straight_line),
         cmocka_unit_test(loss_is_friction_and_minor_losses_with_the_sign_of_the_flow),
         cmocka_unit_test(the_wave_speed_comes_from_the_wall_where_none_is_given),
+        cmocka_unit_test(free_gas_slows_waves_by_the_still_pressure_of_each_span),
+        cmocka_unit_test(a_given_wave_speed_stays_whatever_gas_there_is),
         cmocka_unit_test(deriving_twice_gives_the_same),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
