@@ -33,6 +33,67 @@ static const char SOUND_CASE[] =
     "1.5; "
     "};\n";
 
+/* A main by its lengths alone, with a value at every key of points, pipes and states.
+ */
+static const char MAIN_CASE[] =
+    "format = 1;\n"
+    "water = { temperature = \"12 degC\"; gas_content = 0.002; };\n"
+    "points = (\n"
+    "  { id = \"R\"; z = \"50 m\"; station = \"0+100\"; station_ahead = \"2+000\"; },\n"
+    "  { id = \"K\"; z = \"30 m\"; station = \"2+410\"; turn = \"30 deg right\";\n"
+    "    ground_level = \"32 m\"; },\n"
+    "  { id = \"W\"; z = \"25 m\"; station = \"2+600\"; curve_radius = \"250 m\"; } "
+    ");\n"
+    "pipes = (\n"
+    "  { id = \"A\"; route = [ \"R\", \"K\" ]; length = \"410 m\";\n"
+    "    pipe_class = \"DI-EN545-C40-DN300\"; pressure_rating = \"16 bar\";\n"
+    "    surge_rating = \"19 bar\"; test_rating = \"25 bar\"; },\n"
+    "  { id = \"B\"; route = [ \"K\", \"W\" ]; length = \"190 m\"; branch_turn = \"40 "
+    "deg "
+    "left\";\n"
+    "    pipe_class = \"DI-EN545-C40-DN300\"; } );\n"
+    "fixed_levels = ( { at = \"R\"; level = \"80 m\"; } );\n"
+    "outflows = ( { at = \"W\"; flow = \"18 L/s\"; } );\n"
+    "states = ( { id = \"high\"; },\n"
+    "  { id = \"low\"; levels = ( ( \"R\", \"76.5 m\" ) ); outflow_factor = 0.3;\n"
+    "    roughness_factor = 1.2; } );\n"
+    "scenarios = (\n"
+    "  { id = \"a\"; duration = \"30 s\"; states = [ \"low\" ];\n"
+    "    events = ( { outflow = \"W\"; ramp_time = \"5 s\"; to = \"0 L/s\"; } ); },\n"
+    "  { id = \"b\"; duration = \"30 s\"; states = ( \"low\", \"high\" );\n"
+    "    events = ( { outflow = \"W\"; ramp_time = \"9 s\"; to = \"0 L/s\"; } ); } );\n"
+    "fittings = ( { at = \"K\"; type = \"bend\"; angle = \"30 deg\"; } );\n";
+
+/* The sound case with zones, an obstacle, a branch and a test by rule. */
+static const char DESIGN_CASE[] =
+    "format = 1;\n"
+    "points = (\n"
+    "  { id = \"R1\"; x = \"0 m\"; y = \"0 m\"; z = \"50 m\"; },\n"
+    "  { id = \"T1\"; x = \"200 m\"; y = \"0 m\"; z = \"40 m\"; },\n"
+    "  { id = \"B1\"; x = \"400 m\"; y = \"0 m\"; z = \"30 m\"; },\n"
+    "  { id = \"E1\"; x = \"700 m\"; y = \"300 m\"; z = \"20 m\"; }\n"
+    ");\n"
+    "pipes = ( { id = \"A\"; route = [ \"R1\", \"T1\", \"B1\", \"E1\" ];\n"
+    "  pipe_class = \"DI-EN545-C40-DN300\"; joint = \"push-on\"; } );\n"
+    "fixed_levels = ( { at = \"R1\"; level = \"80 m\"; } );\n"
+    "valves = ( { id = \"V1\"; at = \"E1\"; type = \"butterfly\"; size = \"300 mm\";\n"
+    "  flow = \"100 L/s\"; discharge_level = \"21 m\"; } );\n"
+    "scenarios = ( { id = \"shut\"; duration = \"30 s\"; class = \"occasional\";\n"
+    "  events = ( { valve = \"V1\"; ramp_time = \"10 s\"; to = 0.0; } ); } );\n"
+    "ground = { soil = \"sand-SP\"; cover = \"1.2 m\"; trench = \"type-2\"; };\n"
+    "ground_zones = (\n"
+    "  { pipe = \"A\"; from = \"0+100\"; to = \"0+250\"; soil = \"soft-clay-CH\"; },\n"
+    "  { pipe = \"A\"; from = \"250 m\"; to = \"0+300\"; cover = \"2 m\"; water_table "
+    "= "
+    "\"0.5 m\"; trench = \"type-4\"; } );\n"
+    "fittings = (\n"
+    "  { at = \"B1\"; obstacles = (\n"
+    "    { what = \"sewer\"; direction = [ 3.0, -4.0, 1.0 ]; distance = \"1.8 m\"; "
+    "depth = \"2.5 m\"; } ); } );\n"
+    "loads = { test_pressure = \"12 bar\"; test_gauge_at = \"E1\"; safety_factor = "
+    "1.5;\n"
+    "  future_pressure = \"9 bar\"; future_gauge_at = \"T1\"; };\n";
+
 /* Writes size bytes to a new file; its name into path. */
 static inline void write_bytes(char *path, const char *bytes, size_t size)
 {

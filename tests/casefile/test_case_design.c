@@ -3,36 +3,6 @@
 
 #include <math.h>
 
-/* The sound case with zones, an obstacle, a branch and a test by rule. */
-static const char DESIGN[] =
-    "format = 1;\n"
-    "points = (\n"
-    "  { id = \"R1\"; x = \"0 m\"; y = \"0 m\"; z = \"50 m\"; },\n"
-    "  { id = \"T1\"; x = \"200 m\"; y = \"0 m\"; z = \"40 m\"; },\n"
-    "  { id = \"B1\"; x = \"400 m\"; y = \"0 m\"; z = \"30 m\"; },\n"
-    "  { id = \"E1\"; x = \"700 m\"; y = \"300 m\"; z = \"20 m\"; }\n"
-    ");\n"
-    "pipes = ( { id = \"A\"; route = [ \"R1\", \"T1\", \"B1\", \"E1\" ];\n"
-    "  pipe_class = \"DI-EN545-C40-DN300\"; joint = \"push-on\"; } );\n"
-    "fixed_levels = ( { at = \"R1\"; level = \"80 m\"; } );\n"
-    "valves = ( { id = \"V1\"; at = \"E1\"; type = \"butterfly\"; size = \"300 mm\";\n"
-    "  flow = \"100 L/s\"; discharge_level = \"21 m\"; } );\n"
-    "scenarios = ( { id = \"shut\"; duration = \"30 s\"; class = \"occasional\";\n"
-    "  events = ( { valve = \"V1\"; ramp_time = \"10 s\"; to = 0.0; } ); } );\n"
-    "ground = { soil = \"sand-SP\"; cover = \"1.2 m\"; trench = \"type-2\"; };\n"
-    "ground_zones = (\n"
-    "  { pipe = \"A\"; from = \"0+100\"; to = \"0+250\"; soil = \"soft-clay-CH\"; },\n"
-    "  { pipe = \"A\"; from = \"250 m\"; to = \"0+300\"; cover = \"2 m\"; water_table "
-    "= "
-    "\"0.5 m\"; trench = \"type-4\"; } );\n"
-    "fittings = (\n"
-    "  { at = \"B1\"; obstacles = (\n"
-    "    { what = \"sewer\"; direction = [ 3.0, -4.0, 1.0 ]; distance = \"1.8 m\"; "
-    "depth = \"2.5 m\"; } ); } );\n"
-    "loads = { test_pressure = \"12 bar\"; test_gauge_at = \"E1\"; safety_factor = "
-    "1.5;\n"
-    "  future_pressure = \"9 bar\"; future_gauge_at = \"T1\"; };\n";
-
 /* The soil "bank" by some keys, under the whole main. */
 static char *with_bank(const char *keys)
 {
@@ -40,7 +10,7 @@ static char *with_bank(const char *keys)
     (void)snprintf(piece, sizeof piece,
                    "soils = ( { id = \"bank\"; %s } );\nground = { soil = \"bank\"",
                    keys);
-    return replaced(DESIGN, "ground = { soil = \"sand-SP\"", piece);
+    return replaced(DESIGN_CASE, "ground = { soil = \"sand-SP\"", piece);
 }
 
 static void a_bearing_is_known_in_one_of_four_ways(void **state)
@@ -122,7 +92,7 @@ static void the_bearing_of_a_row_is_assumed_in_its_own_way(void **state)
     row->friction_angle = 0.5;
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
         row->route = ROWS[i].route;
-        kent_model *m = read_sound(c, DESIGN);
+        kent_model *m = read_sound(c, DESIGN_CASE);
         const char *note = assumed(m, ROWS[i].what);
         assert_non_null(note);
         assert_memory_equal(note, ROWS[i].value, strlen(ROWS[i].value));
@@ -162,7 +132,7 @@ static void zones_of_ground_arrive(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, DESIGN);
+    kent_model *m = read_sound(c, DESIGN_CASE);
     assert_int_equal(m->ground.trench, 1);
     assert_int_equal(m->ground_zone_count, 2);
     const kent_ground_zone *a = &m->ground_zones[0], *b = &m->ground_zones[1];
@@ -186,7 +156,7 @@ static void an_obstacle_lies_sideways(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, DESIGN);
+    kent_model *m = read_sound(c, DESIGN_CASE);
     assert_int_equal(m->notes[0].obstacle_count, 1);
     const kent_obstacle *o = &m->obstacles[m->notes[0].obstacle_first];
     assert_string_equal(o->what, "sewer");
@@ -204,7 +174,7 @@ static void branches_and_roles_arrive(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     char *text =
-        replaced(DESIGN, "fittings = (",
+        replaced(DESIGN_CASE, "fittings = (",
                  "fittings = ( { at = \"T1\"; type = \"hydrant\"; apart = true;\n"
                  "  branch = { direction = [ 0.0, 2.0, 0.0 ]; outside_diameter = \"118 "
                  "mm\"; inside_diameter = \"100 mm\"; joint = \"mechanical\"; end = "
@@ -233,7 +203,7 @@ static void branches_and_roles_arrive(void **state)
                        "fittings = ( { at = \"T1\"; branch = { direction = [ 0.0, 1.0, "
                        "0.0 ]; outside_diameter = \"118 mm\"; end = \"%s\"; }; },",
                        ENDS[i].word);
-        text = replaced(DESIGN, "fittings = (", piece);
+        text = replaced(DESIGN_CASE, "fittings = (", piece);
         m = read_sound(c, text);
         assert_int_equal(m->notes[0].branch.end, ENDS[i].end);
         assert_int_equal(m->notes[0].branch.joint, KENT_FLANGED);
@@ -252,7 +222,7 @@ static void an_open_branch_without_a_bore_is_as_wide_as_it_is(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     char *text = replaced(
-        DESIGN, "fittings = (",
+        DESIGN_CASE, "fittings = (",
         "outflows = ( { at = \"T1\"; flow = \"10 L/s\"; } );\n"
         "fittings = ( { at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; "
         "outside_diameter = \"118 mm\"; end = \"open\"; }; },");
@@ -284,7 +254,7 @@ static void each_word_of_a_role_is_read(void **state)
             "= [ 0.0, 0.0, 1.0 ]; outside_diameter = \"118 mm\"; end = "
             "\"blank\"; }; },",
             ROWS[i].word);
-        char *text = replaced(DESIGN, "fittings = (", piece);
+        char *text = replaced(DESIGN_CASE, "fittings = (", piece);
         kent_model *m = read_sound(c, text);
         assert_int_equal(m->notes[0].role, ROWS[i].role);
         kent_model_free(m);
@@ -297,8 +267,8 @@ static void points_may_be_held_together(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    char *text =
-        replaced(DESIGN, "at = \"B1\";", "at = \"B1\"; together_with = [ \"E1\" ];");
+    char *text = replaced(DESIGN_CASE, "at = \"B1\";",
+                          "at = \"B1\"; together_with = [ \"E1\" ];");
     kent_model *m = read_sound(c, text);
     assert_int_equal(m->notes[0].together_count, 1);
     assert_int_equal(m->together[m->notes[0].together_first], 3);
@@ -330,7 +300,7 @@ static void tests_are_stated_or_found_by_a_rule(void **state)
     };
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
-        char *text = replaced(DESIGN, "test_pressure = \"12 bar\";", ROWS[i].keys);
+        char *text = replaced(DESIGN_CASE, "test_pressure = \"12 bar\";", ROWS[i].keys);
         kent_model *m = read_sound(c, text);
         assert_int_equal(m->loads.test_rule, ROWS[i].rule);
         assert_true(isnan(m->loads.test_pressure));
@@ -347,7 +317,7 @@ static void tests_are_stated_or_found_by_a_rule(void **state)
         kent_model_free(m);
         free(text);
     }
-    kent_model *m = read_sound(c, DESIGN);
+    kent_model *m = read_sound(c, DESIGN_CASE);
     assert_int_equal(m->loads.test_rule, KENT_TEST_FIXED);
     assert_close(m->loads.future_pressure, 9e5, 1e-12);
     assert_int_equal(m->loads.future_gauge, 1);
@@ -362,7 +332,7 @@ static void tests_are_stated_or_found_by_a_rule(void **state)
 #define BRANCH                                                                         \
     "{ at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; outside_diameter = "
 
-/* A piece of DESIGN, what stands in its place, and the one complaint. */
+/* A piece of DESIGN_CASE, what stands in its place, and the one complaint. */
 static const struct {
     const char *from, *to;
     int line;
@@ -436,7 +406,7 @@ static void each_fault_gets_its_one_complaint(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof FAULTS / sizeof FAULTS[0]; i++) {
-        char *text = replaced(DESIGN, FAULTS[i].from, FAULTS[i].to);
+        char *text = replaced(DESIGN_CASE, FAULTS[i].from, FAULTS[i].to);
         assert_refused_at(c, text, FAULTS[i].line, FAULTS[i].what);
         free(text);
     }
@@ -447,7 +417,7 @@ static void a_surge_to_test_by_needs_scenarios(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    char *a = replaced(DESIGN, "test_pressure = \"12 bar\";",
+    char *a = replaced(DESIGN_CASE, "test_pressure = \"12 bar\";",
                        "test_rule = \"EN805-surge-calculated\";");
     char *b = replaced(a, "scenarios = (", "/* scenarios = (");
     char *text = replaced(b, "ground = {", "*/ ground = {");

@@ -46,10 +46,23 @@ static void each_refused_allocation_of_a_case_is_out_of_memory(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    reading r = {.catalogue = c};
-    write_bytes(r.path, SOUND_CASE, strlen(SOUND_CASE));
-    assert_true(kent_allocations_needed(read_the_case, &r) > 20);
-    (void)unlink(r.path);
+    char *creeping =
+        replaced(MAIN_CASE, "surge_rating",
+                 "creep = ( ( \"0.05 s\", \"1.06e-10 1/Pa\" ) ); surge_rating");
+    char *together = replaced(DESIGN_CASE, "at = \"B1\";",
+                              "at = \"B1\"; together_with = [ \"E1\" ];");
+    for (size_t i = 0; i < c->material_count; i++) {
+        c->materials[i].plastic = true; /* may creep */
+    }
+    const char *const texts[] = {SOUND_CASE, creeping, together};
+    for (size_t i = 0; i < sizeof texts / sizeof texts[0]; i++) {
+        reading r = {.catalogue = c};
+        write_bytes(r.path, texts[i], strlen(texts[i]));
+        assert_true(kent_allocations_needed(read_the_case, &r) > 20);
+        (void)unlink(r.path);
+    }
+    free(creeping);
+    free(together);
     kent_catalogue_free(c);
 }
 

@@ -3,42 +3,11 @@
 
 #include <math.h>
 
-/* A main by its lengths alone, with a value at every key of points, pipes and states.
- */
-static const char MAIN[] =
-    "format = 1;\n"
-    "water = { temperature = \"12 degC\"; gas_content = 0.002; };\n"
-    "points = (\n"
-    "  { id = \"R\"; z = \"50 m\"; station = \"0+100\"; station_ahead = \"2+000\"; },\n"
-    "  { id = \"K\"; z = \"30 m\"; station = \"2+410\"; turn = \"30 deg right\";\n"
-    "    ground_level = \"32 m\"; },\n"
-    "  { id = \"W\"; z = \"25 m\"; station = \"2+600\"; curve_radius = \"250 m\"; } "
-    ");\n"
-    "pipes = (\n"
-    "  { id = \"A\"; route = [ \"R\", \"K\" ]; length = \"410 m\";\n"
-    "    pipe_class = \"DI-EN545-C40-DN300\"; pressure_rating = \"16 bar\";\n"
-    "    surge_rating = \"19 bar\"; test_rating = \"25 bar\"; },\n"
-    "  { id = \"B\"; route = [ \"K\", \"W\" ]; length = \"190 m\"; branch_turn = \"40 "
-    "deg "
-    "left\";\n"
-    "    pipe_class = \"DI-EN545-C40-DN300\"; } );\n"
-    "fixed_levels = ( { at = \"R\"; level = \"80 m\"; } );\n"
-    "outflows = ( { at = \"W\"; flow = \"18 L/s\"; } );\n"
-    "states = ( { id = \"high\"; },\n"
-    "  { id = \"low\"; levels = ( ( \"R\", \"76.5 m\" ) ); outflow_factor = 0.3;\n"
-    "    roughness_factor = 1.2; } );\n"
-    "scenarios = (\n"
-    "  { id = \"a\"; duration = \"30 s\"; states = [ \"low\" ];\n"
-    "    events = ( { outflow = \"W\"; ramp_time = \"5 s\"; to = \"0 L/s\"; } ); },\n"
-    "  { id = \"b\"; duration = \"30 s\"; states = ( \"low\", \"high\" );\n"
-    "    events = ( { outflow = \"W\"; ramp_time = \"9 s\"; to = \"0 L/s\"; } ); } );\n"
-    "fittings = ( { at = \"K\"; type = \"bend\"; angle = \"30 deg\"; } );\n";
-
 static void stations_turns_and_curves_arrive(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, MAIN);
+    kent_model *m = read_sound(c, MAIN_CASE);
     const double degree = acos(-1.0) / 180.0;
     assert_close(m->points[0].station, 100.0, 1e-15);
     assert_close(m->points[0].station_ahead, 2000.0, 1e-15);
@@ -59,7 +28,7 @@ static void a_rating_of_the_case_replaces_the_class_s(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, MAIN);
+    kent_model *m = read_sound(c, MAIN_CASE);
     const kent_pipe_class *row = kent_catalogue_pipe(c, "DI-EN545-C40-DN300");
     assert_close(m->pipes[0].pressure_rating, 16e5, 1e-12);
     assert_close(m->pipes[0].surge_rating, 19e5, 1e-12);
@@ -85,7 +54,7 @@ static void a_standard_of_another_edition_is_cautioned(void **state)
         char piece[80];
         (void)snprintf(piece, sizeof piece, "standard = \"%s\"; pressure_rating",
                        ROWS[i].own);
-        char *text = replaced(MAIN, "pressure_rating", piece);
+        char *text = replaced(MAIN_CASE, "pressure_rating", piece);
         kent_model *m = read_sound(c, text);
         assert_string_equal(m->pipes[0].standard, ROWS[i].holds);
         assert_int_equal(cautions_with(m, "two editions do not mix"), ROWS[i].cautions);
@@ -121,7 +90,7 @@ static kent_catalogue *with_a_plastic(void)
 static kent_model *read_warm(const kent_catalogue *c, const char *temperature,
                              const char *ratings)
 {
-    char *warm = replaced(MAIN, "12 degC", temperature);
+    char *warm = replaced(MAIN_CASE, "12 degC", temperature);
     char *text = replaced(warm,
                           "pressure_rating = \"16 bar\";\n    surge_rating = \"19 "
                           "bar\"; test_rating = \"25 bar\";",
@@ -166,7 +135,7 @@ static void water_too_warm_for_a_plastic_is_refused(void **state)
 {
     (void)state;
     kent_catalogue *c = with_a_plastic();
-    char *warm = replaced(MAIN, "12 degC", "41 degC");
+    char *warm = replaced(MAIN_CASE, "12 degC", "41 degC");
     assert_refused_at(
         c, warm, 12,
         "pipe \"B\": the water is too warm for ductile-iron: 41 degC, and "
@@ -187,7 +156,7 @@ static void ratings_by_an_unstated_temperature_say_so(void **state)
 {
     (void)state;
     kent_catalogue *c = with_a_plastic();
-    char *text = replaced(MAIN, "temperature = \"12 degC\";",
+    char *text = replaced(MAIN_CASE, "temperature = \"12 degC\";",
                           "density = \"1000 kg/m^3\"; bulk_modulus = \"2.2 GPa\"; "
                           "viscosity = \"1 mPa s\"; vapour_pressure = \"2 kPa\";");
     kent_model *m = read_sound(c, text);
@@ -210,14 +179,14 @@ static void creep_is_the_case_s_or_the_material_s(void **state)
                               "s\", \"1.054e-10 1/Pa\" ) ); pressure_rating";
     static const char UNUSED[] = "creep of pipe walls is read, but";
     kent_catalogue *c = with_a_plastic();
-    kent_model *m = read_sound(c, MAIN);
+    kent_model *m = read_sound(c, MAIN_CASE);
     assert_int_equal(m->creep_count, 1); /* once for both pipes */
     assert_int_equal(m->pipes[1].creep_count, 1);
     assert_close(m->creep[m->pipes[1].creep_first].time, 0.05, 1e-15);
     assert_int_equal(cautions_with(m, UNUSED), 0);
     kent_model_free(m);
 
-    char *text = replaced(MAIN, "pressure_rating", OWN);
+    char *text = replaced(MAIN_CASE, "pressure_rating", OWN);
     m = read_sound(c, text);
     const kent_pipe *a = &m->pipes[0], *b = &m->pipes[1];
     assert_int_equal(a->creep_count, 2);
@@ -242,7 +211,7 @@ static void states_hold_their_levels_and_factors(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, MAIN);
+    kent_model *m = read_sound(c, MAIN_CASE);
     assert_int_equal(m->state_count, 2);
     const kent_state *high = &m->states[0], *low = &m->states[1];
     assert_string_equal(low->id, "low");
@@ -262,7 +231,7 @@ static void a_scenario_starts_from_the_states_it_names(void **state)
 {
     (void)state;
     kent_catalogue *c = read_catalogue();
-    kent_model *m = read_sound(c, MAIN);
+    kent_model *m = read_sound(c, MAIN_CASE);
     const kent_scenario *a = &m->scenarios[0], *b = &m->scenarios[1];
     assert_int_equal(a->state_count, 1);
     assert_int_equal(m->scenario_states[a->state_first], 1);
@@ -273,7 +242,7 @@ static void a_scenario_starts_from_the_states_it_names(void **state)
     assert_null(assumed(m, "states of scenarios that name none"));
     kent_model_free(m);
 
-    char *text = replaced(MAIN, "states = [ \"low\" ];", "");
+    char *text = replaced(MAIN_CASE, "states = [ \"low\" ];", "");
     m = read_sound(c, text);
     assert_int_equal(m->scenarios[0].state_count, 0);
     assert_int_equal(m->march_count, 4);
@@ -284,7 +253,7 @@ static void a_scenario_starts_from_the_states_it_names(void **state)
     kent_catalogue_free(c);
 }
 
-/* A piece of MAIN, what stands in its place, and the one complaint. */
+/* A piece of MAIN_CASE, what stands in its place, and the one complaint. */
 static const struct {
     const char *from, *to;
     int line;
@@ -331,7 +300,7 @@ static void each_fault_gets_its_one_complaint(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof FAULTS / sizeof FAULTS[0]; i++) {
-        char *text = replaced(MAIN, FAULTS[i].from, FAULTS[i].to);
+        char *text = replaced(MAIN_CASE, FAULTS[i].from, FAULTS[i].to);
         assert_refused_at(c, text, FAULTS[i].line, FAULTS[i].what);
         free(text);
     }
