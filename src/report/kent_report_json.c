@@ -411,6 +411,38 @@ static json_t *pipe_of(const kent_model *m, const kent_fitting *f)
     return span >= 0 ? words(m->pipes[m->spans[span].pipe].id) : json_null();
 }
 
+/* null: none, or a pipe leaves there. */
+static json_t *branch_of(const kent_branch *b)
+{
+    if (b->end == KENT_BRANCH_NONE) return json_null();
+    kent_object o = object_new();
+    set(&o, "direction", vector(b->direction));
+    set(&o, "outside_diameter_m", real(b->outside_diameter));
+    set(&o, "inside_diameter_m", real(b->inside_diameter));
+    set(&o, "joint", words(kent_joint_word(b->joint)));
+    set(&o, "end", words(kent_branch_end_word(b->end)));
+    return object_done(o);
+}
+
+static json_t *curve_of(const kent_fitting *f)
+{
+    if (f->type != KENT_CURVE) return json_null();
+    kent_object o = object_new();
+    set(&o, "radius_m", real(f->curve_radius));
+    set(&o, "length_m", real(f->curve_length));
+    return object_done(o);
+}
+
+/* Points whose fittings are told as one. */
+static json_t *members_of(const kent_model *m, const kent_fitting *f)
+{
+    kent_object list = list_new();
+    for (size_t i = 0; i < f->member_count; i++) {
+        append(&list, words(m->points[m->members[f->member_first + i]].id));
+    }
+    return object_done(list);
+}
+
 static json_t *fitting_of(const kent_results *r, size_t index)
 {
     const kent_model *m = r->model;
@@ -423,6 +455,11 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     set(&o, "at", f->point >= 0 ? words(m->points[f->point].id) : json_null());
     set(&o, "pipe", pipe_of(m, f));
     set(&o, "type", words(kent_fitting_type_word(f->type)));
+    set(&o, "role",
+        f->role != KENT_ROLE_NONE ? words(kent_role_word(f->role)) : json_null());
+    set(&o, "branch", branch_of(&f->branch));
+    set(&o, "members", members_of(m, f));
+    set(&o, "curve", curve_of(f));
     set(&o, "angle_deg", real(f->angle * DEGREES));
     set(&o, "station_m", real(f->station));
     set_governing(&o, r, index);

@@ -209,10 +209,29 @@ static kent_shown bend_words(const kent_fitting *fitting, kent_room room)
                  fitting->angle * DEGREES, word[0] != '\0' ? " " : "", word);
 }
 
+/* What it is for, where that says more than its type. */
+static const char *role_or_type(const kent_fitting *fitting)
+{
+    const bool end = fitting->type == KENT_DEAD_END;
+    switch (fitting->role) {
+    case KENT_ROLE_NONE:
+        break;
+    case KENT_ROLE_TAPPING:
+        return "tapping tee";
+    case KENT_ROLE_HYDRANT:
+        return end ? "hydrant end" : "hydrant tee";
+    case KENT_ROLE_AIR_VALVE:
+        return "air valve tee";
+    case KENT_ROLE_WASHOUT:
+        return end ? "washout end" : "washout tee";
+    }
+    return end ? "dead end" : kent_fitting_type_word(fitting->type);
+}
+
 kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
                               kent_system system, kent_room room)
 {
-    const char *word = kent_fitting_type_word(fitting->type);
+    const char *word = role_or_type(fitting);
     const kent_shown branch = size_of(m, fitting, fitting->branch_size, system);
     switch (fitting->type) {
     case KENT_BEND:
@@ -228,12 +247,13 @@ kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
     case KENT_REDUCER:
         return shown("%s to %.40s", word,
                      size_of(m, fitting, smallest_bore(m, fitting), system).text);
+    case KENT_CURVE:
+        return shown("%s %.1f°", word, fitting->angle * DEGREES);
+    case KENT_GROUP:
+        return shown("%s of %zu", word, fitting->member_count);
     case KENT_DEAD_END:
-        return shown("dead end");
     case KENT_VALVE:
     case KENT_STRAIGHT:
-    case KENT_CURVE:
-    case KENT_GROUP:
         break;
     }
     return shown("%s", word);

@@ -45,7 +45,8 @@ kent_shown kent_shown_azimuth(kent_system system, double azimuth, kent_room room
 kent_shown kent_shown_push(const kent_model *m, const kent_fitting *fitting,
                            kent_vec3 thrust, kent_system system, kent_room room);
 
-/* "bend 22.5° crest", "tee, branch 150", "reducer to 300". */
+/* "bend 22.5° crest", "tee, branch 150", "hydrant tee, branch 150", "reducer to 300",
+ * "curve 12.0°", "group of 2". */
 kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
                               kent_system system, kent_room room);
 

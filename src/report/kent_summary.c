@@ -50,6 +50,8 @@ static double reached(const kent_row *r) { return r->holding->factor_reached; }
 static double used(const kent_row *r) { return r->holding->utilisation; }
 static double runner_up(const kent_row *r) { return r->holding->runner_up_load; }
 static double joints(const kent_row *r) { return r->holding->restrained_length; }
+static double curve_radius(const kent_row *r) { return r->fitting->curve_radius; }
+static double curve_length(const kent_row *r) { return r->fitting->curve_length; }
 static double cover(const kent_row *r) { return r->fitting->cover; }
 static double rating(const kent_row *r) { return r->pressures.rating; }
 
@@ -170,6 +172,27 @@ static void orientation(const kent_row *r, kent_text *out)
 {
     if (r->fitting->type != KENT_BEND) return;
     kent_text_add(out, "%s", kent_orientation_word(r->fitting->orientation));
+}
+
+static void role(const kent_row *r, kent_text *out)
+{
+    kent_text_add(out, "%s", kent_role_word(r->fitting->role));
+}
+
+/* How a branch without a pipe ends. */
+static void branch_end(const kent_row *r, kent_text *out)
+{
+    const kent_branch_end end = r->fitting->branch.end;
+    if (end != KENT_BRANCH_NONE) kent_text_add(out, "%s", kent_branch_end_word(end));
+}
+
+/* Points whose fittings are told as this one. */
+static void members(const kent_row *r, kent_text *out)
+{
+    for (size_t i = 0; i < r->fitting->member_count; i++) {
+        const int point = r->model->members[r->fitting->member_first + i];
+        kent_text_add(out, "%s%s", i > 0 ? "; " : "", r->model->points[point].id);
+    }
 }
 
 static void soil(const kent_row *r, kent_text *out)
@@ -338,6 +361,11 @@ static const kent_summary_column COLUMNS[] = {
     {"face volume", face_volume, NULL, KENT_VOLUME, 0},
     {"restrained length", joints, NULL, KENT_LENGTH, 0},
     {"cautions", NULL, cautions, KENT_RATIO, NARROW},
+    {"role", NULL, role, KENT_RATIO, 0},
+    {"branch end", NULL, branch_end, KENT_RATIO, 0},
+    {"members", NULL, members, KENT_RATIO, 0},
+    {"curve radius", curve_radius, NULL, KENT_LENGTH, 0},
+    {"curve length", curve_length, NULL, KENT_LENGTH, 0},
 };
 enum { COLUMN_COUNT = sizeof COLUMNS / sizeof COLUMNS[0] };
 

@@ -183,7 +183,6 @@ static void add_bend(const plan *p, const kent_fitting *f, kent_text *out)
 static void add_curve(const plan *p, const kent_fitting *f, kent_text *out)
 {
     kent_shown s;
-    kent_text_add(out, " of %.1f°", f->angle * DEGREES);
     if (isfinite(f->curve_radius)) {
         kent_text_add(out, ", radius %s", said(p, KENT_LENGTH, f->curve_radius, &s));
     }
@@ -246,9 +245,6 @@ static void add_fitting(const plan *p, const kent_fitting *f, kent_text *out)
         break;
     }
     add_members(p, f, out);
-    if (f->role != KENT_ROLE_NONE) {
-        kent_text_add(out, ", %s", kent_role_word(f->role));
-    }
     add_branch(p, &f->branch, out);
 }
 

@@ -201,6 +201,10 @@ static const char *const KEYS[] = {
     "fittings[].pipe",
     "fittings[].type",
     "fittings[].angle_deg",
+    "fittings[].curve",
+    "fittings[].members",
+    "fittings[].branch",
+    "fittings[].role",
     "fittings[].load_case",
     "fittings[].sense",
     "fittings[].state",
@@ -247,6 +251,58 @@ static const char *const FACE_KEYS[] = {"width_m", "height_m", "thickness_m"};
 
 /* Fails unless path leads somewhere from value in every branch. As deep as the path. */
 /* NOLINTNEXTLINE(misc-no-recursion) */
+/* A main with a hydrant on a flanged branch in mid-run: its JSON as text, and its CSV.
+ */
+static void hydrant_main(kent_text *json, kent_text *csv)
+{
+    kent_build b = kent_build_new();
+    kent_error err = {0};
+    kent_results *r = NULL;
+    kent_build_point(&b, "R", 0.0, 0.0, 10.0);
+    kent_build_point(&b, "H", 100.0, 0.0, 10.0);
+    kent_build_point(&b, "E", 300.0, 0.0, 10.0);
+    kent_build_pipe(&b, "A", "R H E", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 40.0);
+    const int note = kent_build_note(&b, "H");
+    b.model->notes[note].role = KENT_ROLE_HYDRANT;
+    b.model->notes[note].branch = (kent_branch){.end = KENT_BRANCH_BLANK,
+                                                .direction = {0.0, -1.0, 0.0},
+                                                .outside_diameter = 0.118,
+                                                .inside_diameter = 0.1,
+                                                .joint = KENT_FLANGED};
+    kent_build_derive(&b);
+    if (kent_job_run(b.model, &(kent_job_options){.threads = 1}, &r, &err)) {
+        fail_msg("%s: %s", err.where, err.what);
+    }
+    const kent_report_options o = {.units = KENT_SI};
+    assert_int_equal(kent_report_json(r, kent_mixed_sink(json)), KENT_OK);
+    assert_int_equal(kent_report_summary_csv(r, &o, kent_mixed_sink(csv)), KENT_OK);
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
+static void what_a_fitting_serves_stands_in_json_and_csv(void **state)
+{
+    (void)state;
+    kent_text text = {0}, csv = {0};
+    hydrant_main(&text, &csv);
+    json_t *all = json_loads(kent_text_of(&text), 0, NULL);
+    const json_t *h = json_array_get(json_object_get(all, "fittings"), 0);
+    assert_string_equal(json_string_value(json_object_get(h, "type")), "tee");
+    assert_string_equal(json_string_value(json_object_get(h, "role")), "hydrant");
+    const json_t *branch = json_object_get(h, "branch");
+    assert_string_equal(json_string_value(json_object_get(branch, "end")), "blank");
+    assert_string_equal(json_string_value(json_object_get(branch, "joint")), "flanged");
+    assert_close(json_number_value(json_object_get(branch, "outside_diameter_m")),
+                 0.118, 1e-15);
+    assert_int_equal(json_array_size(json_object_get(h, "members")), 0);
+    assert_true(json_is_null(json_object_get(h, "curve")));
+    assert_contains(kent_text_of(&csv), ",hydrant,blank,,,\n");
+    json_decref(all);
+    kent_text_clear(&text);
+    kent_text_clear(&csv);
+}
+
 static void walk(const json_t *value, const char *path, const char *whole)
 {
     if (*path == '\0') return;
@@ -564,6 +620,7 @@ int main(void)
         cmocka_unit_test(legs_and_faces_have_their_keys),
         cmocka_unit_test(a_number_comes_back_with_every_bit),
         cmocka_unit_test(a_value_that_is_not_there_is_null),
+        cmocka_unit_test(what_a_fitting_serves_stands_in_json_and_csv),
         cmocka_unit_test(the_summary_has_a_record_for_each_fitting),
         cmocka_unit_test(a_history_has_three_columns_for_each_place),
         cmocka_unit_test(a_profile_runs_along_every_pipe_without_a_step_back),

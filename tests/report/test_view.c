@@ -118,6 +118,24 @@ static void a_turn_that_joints_take_is_no_fitting(void **state)
     kent_build_clear(&b);
 }
 
+static void a_branch_without_a_pipe_is_told_with_its_end(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(0.0);
+    const int note = kent_build_note(&b, "P");
+    b.model->notes[note].role = KENT_ROLE_HYDRANT;
+    b.model->notes[note].branch = (kent_branch){.end = KENT_BRANCH_VALVE,
+                                                .direction = {0.0, 1.0, 0.0},
+                                                .outside_diameter = 0.118,
+                                                .inside_diameter = 0.1,
+                                                .joint = KENT_FLANGED};
+    kent_build_derive(&b);
+    assert_says(&b, KENT_SI,
+                "hydrant tee, branch 100; a branch of 118 mm outside diameter with "
+                "flanged joints, behind a closed valve.");
+    kent_build_clear(&b);
+}
+
 /* ---- ground and restraint -------------------------------------------------------- */
 
 static void a_value_of_the_ground_says_whose_it_is(void **state)
@@ -143,8 +161,7 @@ static void what_was_not_stated_is_said(void **state)
     (void)state;
     kent_build b = bent_main(45.0);
     kent_build_derive(&b);
-    assert_says(&b, KENT_SI,
-                "No soil stated, no cover stated, no ground water.");
+    assert_says(&b, KENT_SI, "No soil stated, no cover stated, no ground water.");
     kent_build_clear(&b);
 }
 
@@ -385,6 +402,7 @@ int main(void)
         cmocka_unit_test(a_level_turn_goes_to_its_side),
         cmocka_unit_test(a_turn_in_space_is_told_by_its_two_parts),
         cmocka_unit_test(a_turn_that_joints_take_is_no_fitting),
+        cmocka_unit_test(a_branch_without_a_pipe_is_told_with_its_end),
         cmocka_unit_test(a_value_of_the_ground_says_whose_it_is),
         cmocka_unit_test(what_was_not_stated_is_said),
         cmocka_unit_test(a_restraint_says_why),
