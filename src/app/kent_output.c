@@ -90,21 +90,6 @@ static kent_status write_file(const output_file *f, const char *name,
     return closed;
 }
 
-/* "history-shut-16s.csv"; the state follows where a scenario starts from several. */
-static void add_name(const kent_model *m, const char *word,
-                     const kent_scenario_result *s, kent_text *out)
-{
-    size_t states = 0;
-    for (size_t i = 0; i < m->march_count; i++) {
-        if (m->marches[i].scenario == s->scenario) states++;
-    }
-    kent_text_reset(out);
-    /* an id has nothing that a file's name could not: the reader sees to it */
-    kent_text_add(out, "%s-%s", word, m->scenarios[s->scenario].id);
-    if (states > 1) kent_text_add(out, "-%s", m->states[s->state].id);
-    kent_text_add(out, ".csv");
-}
-
 kent_status kent_output_fill(const kent_results *r, const kent_report_options *o,
                              kent_folder *folder, kent_error *err)
 {
@@ -118,9 +103,14 @@ kent_status kent_output_fill(const kent_results *r, const kent_report_options *o
     f.write = write_json;
     if (!status) status = write_file(&f, KENT_OUTPUT_MARKER, folder, err);
     for (size_t i = 0; !status && i < r->scenario_count; i++) {
+        const kent_scenario_result *s = &r->scenarios[i];
+        const kent_march march = {s->scenario, s->state};
         f.scenario = i;
         for (size_t k = 0; !status && k < sizeof EACH / sizeof EACH[0]; k++) {
-            add_name(r->model, EACH[k].word, &r->scenarios[i], &name);
+            kent_text_reset(&name);
+            /* an id has nothing that a file's name could not: the reader sees to it */
+            kent_text_add(&name, "%s-%s.csv", EACH[k].word,
+                          kent_march_file_name(r->model, march).s);
             f.write = EACH[k].write;
             status = name.failed ? kent_error_nomem(err)
                                  : write_file(&f, kent_text_of(&name), folder, err);

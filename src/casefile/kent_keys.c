@@ -295,7 +295,7 @@ const kent_key KENT_KEYS[] = {
     NUMBER("valve", "cv", BETWEEN(0.0, 1e8), "none",
            "US gallon/min at 1 psi at full opening, in place of loss"),
     QUANTITY("valve", "flow", KENT_FLOW, BETWEEN(0.0, 1000.0), "none",
-             "flow it passes in the steady state, in place of loss"),
+             "flow it passes in the first state, in place of loss"),
     LIST("valve", "characteristic", "", "the type's",
          "pairs (opening, K), at least two, in place of type"),
     NUMBER("valve", "opening", WITHIN(0.0, 1.0), "1.0", "opening in the steady state"),

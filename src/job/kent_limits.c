@@ -66,9 +66,7 @@ static void judge_rating_at_rest(kent_results *r)
     const kent_model *m = r->model;
     for (size_t i = 0; i < m->span_count; i++) {
         const kent_span *span = &m->spans[i];
-        const double level = isnan(m->loads.static_level)
-                                 ? kent_static_level(m, span->node[0])
-                                 : m->loads.static_level;
+        const double level = kent_static_level(m, span->node[0]);
         size_t lowest = span->route_first;
         for (size_t p = 1; p < span->route_count; p++) {
             const size_t at = span->route_first + p;

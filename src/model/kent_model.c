@@ -59,6 +59,7 @@ static void clear_derived(kent_model *m)
     free(m->fittings);
     free(m->members);
     free(m->marches);
+    free(m->highest_level);
     m->chainage = m->station = m->station_on = NULL;
     m->zone_first = NULL;
     m->zone_order = NULL;
@@ -69,6 +70,7 @@ static void clear_derived(kent_model *m)
     m->fittings = NULL;
     m->members = NULL;
     m->marches = NULL;
+    m->highest_level = NULL;
     m->span_count = m->node_count = m->port_count = m->fitting_count = 0;
     m->member_count = m->march_count = 0;
 }
@@ -154,7 +156,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     status = kent_fitting_list(m, &layout, complaints);
     if (status != KENT_OK) goto done;
-    status = kent_state_marches(m);
+    status = kent_state_marches(m, complaints);
+    if (status == KENT_OK) status = kent_state_levels(m);
     if (status == KENT_OK && m->cautions.failed) status = KENT_E_NOMEM;
 done:
     if (status == KENT_OK && complaints->count > before) status = KENT_E_INPUT;
@@ -162,6 +165,12 @@ done:
     kent_layout_clear(&layout);
     assert(status != KENT_OK || kent_model_is_valid(m));
     return status;
+}
+
+double kent_static_level(const kent_model *m, int node)
+{
+    return isnan(m->loads.static_level) ? m->highest_level[node]
+                                        : m->loads.static_level;
 }
 
 double kent_model_pressure(const kent_model *m, double head, double level)

@@ -569,6 +569,8 @@ typedef struct kent_model {
     size_t member_count;
     kent_march *marches; /* [march_count] by scenario, then state: what is marched */
     size_t march_count;
+    double *highest_level; /* [node_count] m: of all fixed levels in all states that it
+                              is connected to with every valve open; NAN: none */
 } kent_model;
 
 /* With nothing given: NAN, -1, no branch, no derating, every bearing by one value. */
@@ -600,6 +602,10 @@ typedef struct kent_name {
     char s[2 * KENT_ID + 20];
 } kent_name;
 kent_name kent_name_in_state(const kent_model *m, const char *name, int state);
+
+/* What files of a march are called after: "shut-16s", and "shut-16s-low" where that
+ * scenario starts from several states. No two marches share one. */
+kent_name kent_march_file_name(const kent_model *m, kent_march march);
 
 /* Whether indices are in range, spans and nodes fit each other, and every SI value that
  * must be positive is. For assertions and tests. */
@@ -635,6 +641,10 @@ kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chai
 
 /* m: station at a chainage of a pipe, counted from the last point before it. */
 double kent_model_station_at(const kent_model *m, int pipe, double chainage);
+
+/* m: level of the water at a node where nothing flows: the one stated, else the highest
+ * connected level of any state. NAN: none. */
+double kent_static_level(const kent_model *m, int node);
 
 /* Pa gauge, from a piezometric head (m) at a level (m). */
 double kent_model_pressure(const kent_model *m, double head, double level);

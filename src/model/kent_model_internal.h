@@ -82,8 +82,10 @@ kent_status kent_network_cut(kent_model *m, kent_layout *l,
 kent_status kent_network_check_connected(const kent_model *m,
                                          kent_complaints *complaints);
 
-/* kent_state.c: the one state of a case that names none, and what is marched. */
-kent_status kent_state_marches(kent_model *m);
+/* kent_state.c: the one state of a case that names none, and what is marched; then
+ * kent_model.highest_level. */
+kent_status kent_state_marches(kent_model *m, kent_complaints *complaints);
+kent_status kent_state_levels(kent_model *m);
 
 /* kent_span.c: bore, friction, wave speed and share of losses from its pipe. */
 void kent_span_fill(const kent_model *m, kent_span *span);

@@ -1,4 +1,5 @@
 #include "kent_model_internal.h"
+#include "kent_parts.h"
 
 #include <assert.h>
 #include <math.h>
@@ -18,7 +19,25 @@ static kent_status one_state(kent_model *m)
     return KENT_OK;
 }
 
-kent_status kent_state_marches(kent_model *m)
+/* Files of results are named "SCENARIO-STATE" where a scenario has several, as here. */
+static void check_names(const kent_model *m, kent_complaints *complaints)
+{
+    for (size_t i = 0; i < m->march_count; i++) {
+        for (size_t k = 0; k < i; k++) {
+            const kent_name a = kent_march_file_name(m, m->marches[i]);
+            const kent_name b = kent_march_file_name(m, m->marches[k]);
+            if (strcmp(a.s, b.s) != 0) continue;
+            const kent_scenario *s = &m->scenarios[m->marches[i].scenario];
+            kent_place_complain(m, s->place, complaints,
+                                "scenario \"%s\": its results and those of scenario "
+                                "\"%s\" would both be called \"%s\"; give one of them "
+                                "another id",
+                                s->id, m->scenarios[m->marches[k].scenario].id, a.s);
+        }
+    }
+}
+
+kent_status kent_state_marches(kent_model *m, kent_complaints *complaints)
 {
     if (one_state(m) != KENT_OK) return KENT_E_NOMEM;
     m->marches = kent_alloc(m->scenario_count, m->state_count * sizeof *m->marches);
@@ -32,7 +51,47 @@ kent_status kent_state_marches(kent_model *m)
             m->marches[m->march_count++] = (kent_march){(int)i, state};
         }
     }
+    check_names(m, complaints);
     return KENT_OK;
+}
+
+/* m: the level of a fixed level in a state. */
+static double level_in_state(const kent_model *m, const kent_state *s, size_t fixed)
+{
+    for (size_t i = 0; i < s->level_count; i++) {
+        const kent_state_level *l = &m->state_levels[s->level_first + i];
+        if ((size_t)l->fixed_level == fixed) return l->level;
+    }
+    return m->fixed_levels[fixed].level;
+}
+
+kent_status kent_state_levels(kent_model *m)
+{
+    kent_status status = KENT_E_NOMEM;
+    int *part = kent_alloc(m->node_count, sizeof *part);
+    double *highest = kent_alloc(m->node_count, sizeof *highest); /* by part */
+
+    m->highest_level = kent_alloc(m->node_count, sizeof *m->highest_level);
+    if (!part || !highest || !m->highest_level) goto done;
+    kent_parts_find(m, NULL, part);
+    for (size_t n = 0; n < m->node_count; n++) {
+        highest[n] = (double)NAN;
+    }
+    for (size_t i = 0; i < m->fixed_level_count; i++) {
+        double *of_part = &highest[part[m->fixed_levels[i].node]];
+        for (size_t s = 0; s < m->state_count; s++) {
+            const double level = level_in_state(m, &m->states[s], i);
+            *of_part = fmax(*of_part, level); /* fmax passes over the NAN */
+        }
+    }
+    for (size_t n = 0; n < m->node_count; n++) {
+        m->highest_level[n] = highest[part[n]];
+    }
+    status = KENT_OK;
+done:
+    free(part);
+    free(highest);
+    return status;
 }
 
 /* C of Hazen-Williams falls as a pipe roughens, the other coefficients rise. */
@@ -86,9 +145,8 @@ kent_model *kent_model_in_state(const kent_model *m, int state, const double *ca
         kent_model_view_free(view);
         return NULL;
     }
-    for (size_t i = 0; i < s->level_count; i++) {
-        const kent_state_level *l = &m->state_levels[s->level_first + i];
-        view->fixed_levels[l->fixed_level].level = l->level;
+    for (size_t i = 0; i < view->fixed_level_count; i++) {
+        view->fixed_levels[i].level = level_in_state(m, s, i);
     }
     for (size_t i = 0; i < view->outflow_count; i++) {
         view->outflows[i].flow *= s->outflow_factor;
@@ -113,6 +171,18 @@ kent_name kent_name_in_state(const kent_model *m, const char *name, int state)
     } else {
         (void)snprintf(out.s, sizeof out.s, "%s (%s)", name, m->states[state].id);
     }
+    return out;
+}
+
+kent_name kent_march_file_name(const kent_model *m, kent_march march)
+{
+    kent_name out;
+    size_t states = 0;
+    for (size_t i = 0; i < m->march_count; i++) {
+        if (m->marches[i].scenario == march.scenario) states++;
+    }
+    (void)snprintf(out.s, sizeof out.s, "%s%s%s", m->scenarios[march.scenario].id,
+                   states > 1 ? "-" : "", states > 1 ? m->states[march.state].id : "");
     return out;
 }
 

@@ -82,7 +82,8 @@ kent_pressures kent_pressures_of(const kent_results *r, size_t fitting)
         for (size_t k = 0; k < sizeof NAMED / sizeof NAMED[0]; k++) {
             if (load->scenario >= 0 || strcmp(load->name, NAMED[k].name) != 0) continue;
             if (!load->worst[KENT_RESULTANT].set) continue;
-            p.at[NAMED[k].column] = load->worst[KENT_RESULTANT].pressure;
+            double *at = &p.at[NAMED[k].column]; /* of steady states the highest */
+            *at = fmax(*at, load->worst[KENT_RESULTANT].pressure);
         }
     }
     take_scenarios(r, f, &p);

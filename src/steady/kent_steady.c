@@ -2,7 +2,7 @@
 #include "kent_equations_internal.h"
 #include "kent_newton_internal.h"
 #include "kent_outlet_internal.h"
-#include "kent_parts_internal.h"
+#include "kent_parts.h"
 
 #include <assert.h>
 #include <math.h>
@@ -373,21 +373,4 @@ double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
     const kent_span *e = &m->spans[span];
     const double share = chainage / e->length;
     return (1.0 - share) * s->node_head[e->node[0]] + share * s->node_head[e->node[1]];
-}
-
-double kent_static_level(const kent_model *m, int node)
-{
-    double level = NAN;
-    assert(node >= 0 && (size_t)node < m->node_count);
-    int *part = kent_alloc(m->node_count, sizeof *part);
-
-    if (!part) return NAN;
-    kent_parts_find(m, NULL, part);
-    for (size_t i = 0; i < m->fixed_level_count; i++) {
-        const kent_fixed_level *f = &m->fixed_levels[i];
-        if (f->node < 0 || part[f->node] != part[node]) continue;
-        level = fmax(level, f->level); /* fmax passes over the NAN */
-    }
-    free(part);
-    return level;
 }

@@ -52,8 +52,4 @@ kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
 double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
                         double chainage);
 
-/* m: the highest fixed level that a node is connected to with every valve open,
- * whatever flows. NAN: none, or no memory to look for it. */
-double kent_static_level(const kent_model *m, int node);
-
 #endif

@@ -71,9 +71,7 @@ static double fitting_test_pressure(const kent_model *m, const kent_fitting *f)
 static double fitting_static_pressure(const kent_model *m, const kent_fitting *f)
 {
     const kent_port *port = &m->ports[f->port_first];
-    const double level = isnan(m->loads.static_level)
-                             ? kent_static_level(m, m->spans[port->span].node[0])
-                             : m->loads.static_level;
+    const double level = kent_static_level(m, m->spans[port->span].node[0]);
 
     return kent_model_pressure(m, level, f->at.z);
 }

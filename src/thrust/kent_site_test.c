@@ -81,9 +81,7 @@ static survey survey_main(const kent_model *m, kent_steady *const *steadies)
 
     for (size_t i = 0; i < m->span_count; i++) {
         const kent_span *span = &m->spans[i];
-        const double level = isnan(m->loads.static_level)
-                                 ? kent_static_level(m, span->node[0])
-                                 : m->loads.static_level;
+        const double level = kent_static_level(m, span->node[0]);
         for (size_t k = 0; k < span->route_count; k++) {
             const kent_worst here =
                 working_at(m, steadies, (int)i, span->route_first + k, level);

@@ -19,6 +19,9 @@ enum {
     SOILS,
     NOTES,
     PORTS,
+    STATES,
+    STATE_LEVELS,
+    SCENARIO_STATES,
     LISTS
 };
 
@@ -202,6 +205,45 @@ int kent_build_scenario(kent_build *b, const char *id, double duration)
                                       .place = {0, 500 + i}};
     name(m->scenarios[i].id, id);
     return i;
+}
+
+int kent_build_state(kent_build *b, const char *id)
+{
+    kent_model *m = b->model;
+    m->states = one_more(b, STATES, m->states, &m->state_count, sizeof *m->states);
+    const int i = (int)m->state_count - 1;
+    m->states[i] = (kent_state){.level_first = m->state_level_count,
+                                .outflow_factor = 1.0,
+                                .roughness_factor = 1.0,
+                                .place = {0, 700 + i}};
+    name(m->states[i].id, id);
+    return i;
+}
+
+void kent_build_state_level(kent_build *b, int state, int fixed_level, double level)
+{
+    kent_model *m = b->model;
+    if (state + 1 != (int)m->state_count) {
+        fail_msg("levels belong to the state added last");
+    }
+    m->state_levels = one_more(b, STATE_LEVELS, m->state_levels, &m->state_level_count,
+                               sizeof *m->state_levels);
+    m->state_levels[m->state_level_count - 1] = (kent_state_level){fixed_level, level};
+    m->states[state].level_count++;
+}
+
+void kent_build_starts_from(kent_build *b, int scenario, int state)
+{
+    kent_model *m = b->model;
+    kent_scenario *s = &m->scenarios[scenario];
+    if (scenario + 1 != (int)m->scenario_count) {
+        fail_msg("states belong to the scenario added last");
+    }
+    if (s->state_count == 0) s->state_first = m->scenario_state_count;
+    m->scenario_states = one_more(b, SCENARIO_STATES, m->scenario_states,
+                                  &m->scenario_state_count, sizeof *m->scenario_states);
+    m->scenario_states[m->scenario_state_count - 1] = state;
+    s->state_count++;
 }
 
 static int add_event(kent_build *b, int scenario, kent_event event)

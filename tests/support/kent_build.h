@@ -21,7 +21,7 @@
 
 #include "kent_model.h"
 
-enum { KENT_BUILD_LISTS = 12 };
+enum { KENT_BUILD_LISTS = 15 };
 
 typedef struct kent_build {
     kent_model *model;
@@ -56,6 +56,16 @@ int kent_build_valve(kent_build *b, const char *id, const char *at, double capac
                      double discharge_level);
 
 int kent_build_scenario(kent_build *b, const char *id, double duration); /* s */
+
+/* A state with both factors 1 until changed; the first one added takes the place of
+ * "normal". */
+int kent_build_state(kent_build *b, const char *id);
+
+/* In the state added last the fixed level of that index stands at level, m. */
+void kent_build_state_level(kent_build *b, int state, int fixed_level, double level);
+
+/* The scenario added last starts from that state: without any, from all. */
+void kent_build_starts_from(kent_build *b, int scenario, int state);
 
 /* An event of the scenario added last: `scenario` must be its index. s, s, and opening
  * or m3/s. */

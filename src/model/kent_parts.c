@@ -1,4 +1,4 @@
-#include "kent_parts_internal.h"
+#include "kent_parts.h"
 
 /* The node that stands for n's part; shortens the way for the next question. */
 static int root(int *part, int n)

@@ -1,6 +1,6 @@
 #include "kent_build.h"
 #include "kent_check.h"
-#include "kent_parts_internal.h"
+#include "kent_parts.h"
 
 /* R - V - E with an in-line valve at V, and an island S - T. */
 static kent_build two_parts(void)

@@ -1,6 +1,6 @@
 /* Which nodes water can pass between: the connected parts of a network. */
-#ifndef KENT_PARTS_INTERNAL_H
-#define KENT_PARTS_INTERNAL_H
+#ifndef KENT_PARTS_H
+#define KENT_PARTS_H
 
 #include "kent_model.h"
 
