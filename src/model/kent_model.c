@@ -120,15 +120,22 @@ void kent_place_complain(const kent_model *m, kent_place place,
                   known ? place.line : 0, "%s", what);
 }
 
-/* Points that no pipe runs through: allowed, since a survey lists more than is built.
- */
+/* Points that no pipe runs through: allowed, since a survey lists more than is built;
+ * the first few by name. */
 static void caution_unused_points(kent_model *m, const kent_layout *l)
 {
+    enum { NAMED = 10 };
+    size_t unused = 0;
     if (m->pipe_count == 0) return;
     for (size_t p = 0; p < m->point_count; p++) {
         if (l->first[p + 1] > l->first[p]) continue;
+        if (unused++ >= NAMED) continue;
         kent_notes_add(&m->cautions, "point \"%s\" is on no pipe's route",
                        m->points[p].id);
+    }
+    if (unused > NAMED) {
+        kent_notes_add(&m->cautions, "%zu more points are on no pipe's route",
+                       unused - NAMED);
     }
 }
 
