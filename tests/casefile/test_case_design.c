@@ -118,6 +118,22 @@ static void a_bearing_that_cannot_be_known_is_refused(void **state)
          "soil \"bank\": passive_share needs friction_angle or cohesion, from which "
          "the "
          "passive earth pressure follows"},
+        {"allowable_bearing = \"90 kPa\"; bearing_gradient = \"31 kPa/m\";",
+         "soil \"bank\": allowable_bearing and bearing_gradient are both given; keep "
+         "one"},
+        {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ) );",
+         "soil \"bank\": bearing_by_depth needs at least two pairs (depth, bearing); a "
+         "bearing for every depth is allowable_bearing"},
+        {"bearing_by_depth = ( ( \"2 m\", \"80 kPa\" ), ( \"1 m\", \"90 kPa\" ) );",
+         "soil \"bank\": pair 2 of bearing_by_depth: depths must rise from above 0 m, "
+         "bearings not be negative"},
+        {"bearing_by_depth = ( ( \"2 m\", \"80 kPa\" ), \"1 m\" );",
+         "soil \"bank\": element 2 of bearing_by_depth must be a pair, as ( \"1.4 m\", "
+         "\"150 kPa\" )"},
+        {"allowable_bearing = \"90 kPa\"; passive_ratios = ( ( \"type-6\", 0.4 ) );",
+         "soil \"bank\": element 1 of passive_ratios must be a pair of a trench, "
+         "type-1 to "
+         "type-5, and a ratio from 0.0 to 1.0, as ( \"type-3\", 0.4 )"},
     };
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
