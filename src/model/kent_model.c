@@ -163,6 +163,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     status = kent_fitting_list(m, &layout, complaints);
     if (status != KENT_OK) goto done;
+    status = kent_group_fittings(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
     status = kent_state_marches(m, complaints);
     if (status == KENT_OK) status = kent_state_levels(m);
     if (status == KENT_OK && m->cautions.failed) status = KENT_E_NOMEM;
@@ -214,6 +216,21 @@ int kent_model_point_index(const kent_model *m, const char *id)
 int kent_model_pipe_index(const kent_model *m, const char *id)
 {
     return index_of(m->pipes, m->pipe_count, sizeof *m->pipes, id);
+}
+
+int kent_model_fitting_of(const kent_model *m, const char *id)
+{
+    for (size_t f = 0; f < m->fitting_count; f++) {
+        if (strcmp(m->fittings[f].id, id) == 0) return (int)f;
+    }
+    for (size_t f = 0; f < m->fitting_count; f++) {
+        const kent_fitting *fitting = &m->fittings[f];
+        for (size_t k = 0; k < fitting->member_count; k++) {
+            const int point = m->members[fitting->member_first + k];
+            if (strcmp(m->points[point].id, id) == 0) return (int)f;
+        }
+    }
+    return -1;
 }
 
 int kent_model_valve_index(const kent_model *m, const char *id)
