@@ -284,10 +284,12 @@ static void points_may_be_held_together(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     char *text = replaced(DESIGN_CASE, "at = \"B1\";",
-                          "at = \"B1\"; together_with = [ \"E1\" ];");
+                          "at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; "
+                          "outside_diameter = \"118 mm\"; end = \"blank\"; }; }, "
+                          "{ at = \"B1\"; together_with = [ \"T1\" ];");
     kent_model *m = read_sound(c, text);
-    assert_int_equal(m->notes[0].together_count, 1);
-    assert_int_equal(m->together[m->notes[0].together_first], 3);
+    assert_int_equal(m->notes[1].together_count, 1);
+    assert_int_equal(m->together[m->notes[1].together_first], 1);
     kent_model_free(m);
     free(text);
     kent_catalogue_free(c);
