@@ -160,6 +160,7 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
 void kent_limits_judge(kent_results *r)
 {
     judge_rating_at_rest(r);
+    if (r->loads) kent_site_test_caution(r->model, &r->loads->test, &r->cautions);
     for (size_t i = 0; i < r->scenario_count; i++) {
         judge_rating(r, &r->scenarios[i]);
         judge_vapour(r, &r->scenarios[i]);

@@ -245,7 +245,14 @@ static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c,
     char formula[64];
     if (c->scenario < 0 && c->kind == KENT_CASE_TEST) {
         kent_derivation_work(d, case_symbol("p", index).text, p, KENT_PRESSURE,
-                             "pg+rho*g*(zg-z)", "9.1", "test pressure, by elevation");
+                             "p_test+rho*g*(z_gauge-z)", "9.1",
+                             "test pressure, by elevation");
+        return;
+    }
+    if (c->later) {
+        kent_derivation_work(d, case_symbol("p", index).text, p, KENT_PRESSURE,
+                             "p_later+rho*g*(z_later-z)", "9.12",
+                             "later pressure, by elevation");
         return;
     }
     kent_derivation_put(d, case_symbol("H", index).text, head, KENT_LENGTH,
@@ -260,7 +267,7 @@ static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c,
 static void print_case_arithmetic(const kent_sheet *s)
 {
     const kent_model *m = s->model;
-    const int gauge = m->loads.test_gauge;
+    const kent_site_test *test = s->loads->count > 0 ? s->loads->cases[0].test : NULL;
     kent_derivation d = {0};
     if (s->fitting->point < 0) return;
     kent_derivation_heading(&d, "Each case by arithmetic");
@@ -271,12 +278,11 @@ static void print_case_arithmetic(const kent_sheet *s)
                         "gravity");
     kent_derivation_put(&d, "z", s->fitting->at.z, KENT_LENGTH, KENT_GIVEN,
                         "level of the fitting's centre");
-    if (isfinite(m->loads.test_pressure)) {
-        kent_derivation_put(&d, "pg", m->loads.test_pressure, KENT_PRESSURE, KENT_GIVEN,
-                            "test pressure at its gauge");
-        kent_derivation_put(
-            &d, "zg", gauge >= 0 ? m->points[gauge].at.z : s->fitting->at.z,
-            KENT_LENGTH, gauge >= 0 ? KENT_GIVEN : KENT_ASSUMED, "level of the gauge");
+    if (test && isfinite(test->pressure)) {
+        kent_site_test_derive(m, test, s->fitting->at.z, &d);
+    }
+    if (isfinite(m->loads.future_pressure)) {
+        kent_loads_derive_later(m, s->fitting, &d);
     }
     for (size_t i = 0; i < s->loads->count; i++) {
         const kent_load_case *c = &s->loads->cases[i];

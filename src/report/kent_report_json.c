@@ -247,6 +247,20 @@ static json_t *scenario_point(const kent_model *m, size_t point,
     return object_done(o);
 }
 
+/* How the pressure of the site test was found, and where it is read. */
+static json_t *test_of(const kent_results *r)
+{
+    const kent_site_test *t = &r->loads->test;
+    const bool none = t->rule == KENT_TEST_FIXED && isnan(t->pressure);
+    if (none) return json_null();
+    kent_object o = object_new();
+    set(&o, "rule", words(kent_site_test_rule_word(t->rule)));
+    set(&o, "gauge",
+        t->gauge >= 0 ? words(r->model->points[t->gauge].id) : json_null());
+    set(&o, "pressure_Pa", real(t->pressure));
+    return object_done(o);
+}
+
 static void put_scenario(kent_writer *w, const kent_scenario_result *s)
 {
     const kent_model *m = w->model;
@@ -510,7 +524,9 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     for (size_t i = 0; i < r->model->assumed.count; i++) {
         put_element(&w, assumed_of(r->model->assumed.text[i]));
     }
-    put_text(&w, "],\n\"concrete_m3\": ");
+    put_text(&w, "],\n\"test\": ");
+    put_value(&w, test_of(r));
+    put_text(&w, ",\n\"concrete_m3\": ");
     put_value(&w, real(r->restraints->concrete));
     put_text(&w, ",\n\"not_held\": ");
     put_value(&w, count_of(r->restraints->not_held));

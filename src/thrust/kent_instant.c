@@ -1,6 +1,8 @@
 #include "kent_recorder_internal.h"
 
+#include <assert.h>
 #include <math.h>
+#include <string.h>
 
 static const double PI = 3.14159265358979323846;
 
@@ -73,8 +75,8 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
         s->flow_rate = ports[i].face > 0.0 ? frame->flow_rate[i] : 0.0;
         s->momentum_factor = kent_port_momentum_factor(m, &ports[i], frame->flow[i]);
     }
-    out.pressure = out.balance.port[widest].pressure -
-                   pressure_below_centre(m, f, &ports[widest]);
+    out.pressure =
+        out.balance.port[widest].pressure - pressure_below_centre(m, f, &ports[widest]);
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
         out.pressure = fmax(out.pressure, out.balance.port[i].pressure);
     }
@@ -82,24 +84,115 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
     return out;
 }
 
-kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
-                                  double pressure, int only)
+/* Still water at ports. shut: an open end is closed, and under pressure too. */
+static kent_instant instant_of_still_water(const kent_model *m, const kent_fitting *f,
+                                           const kent_port *ports, size_t count,
+                                           double pressure, int only, bool shut)
 {
-    const kent_port *ports = &m->ports[f->port_first];
     kent_instant out = {.set = true,
                         .time = NAN,
                         .pressure = pressure,
                         .balance = balance_with_weight(f)};
 
-    for (size_t i = 0; i < f->port_count; i++) {
+    for (size_t i = 0; i < count; i++) {
         kent_port_state *s = &out.balance.port[i];
-        if (ports[i].kind != KENT_PORT_OUTLET && (only < 0 || (size_t)only == i)) {
+        const bool open = ports[i].kind == KENT_PORT_OUTLET && !shut;
+        if (!open && (only < 0 || (size_t)only == i)) {
             s->pressure = pressure + pressure_below_centre(m, f, &ports[i]);
         }
         s->momentum_factor = kent_port_momentum_factor(m, &ports[i], 0.0);
     }
-    kent_balance_sum(ports, f->port_count, m->water.density, &out.balance);
+    kent_balance_sum(ports, count, m->water.density, &out.balance);
     return out;
+}
+
+kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
+                                  double pressure, int only)
+{
+    return instant_of_still_water(m, f, &m->ports[f->port_first], f->port_count,
+                                  pressure, only, false);
+}
+
+kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,
+                                   const kent_load_case *c, double pressure)
+{
+    kent_port ports[KENT_PORTS];
+    const size_t count = kent_load_case_ports(m, f, c, ports);
+
+    return instant_of_still_water(m, f, ports, count, pressure, -1, true);
+}
+
+/* The branch without a pipe as a leg: what joins it may slip, so that the pressure acts
+ * on its outside diameter. */
+static kent_port extended_leg(const kent_branch *branch)
+{
+    kent_port port = kent_port_blank();
+
+    port.kind = KENT_PORT_STUB;
+    port.direction = branch->direction;
+    port.outside_diameter = port.seal_diameter = branch->outside_diameter;
+    port.inside_diameter = isnan(branch->inside_diameter) ? branch->outside_diameter
+                                                          : branch->inside_diameter;
+    return port;
+}
+
+size_t kent_load_case_ports(const kent_model *m, const kent_fitting *f,
+                            const kent_load_case *c, kent_port out[KENT_PORTS])
+{
+    size_t count = f->port_count;
+    bool there = false; /* the branch is among the fitting's own ports */
+
+    assert(count <= KENT_PORTS);
+    memcpy(out, &m->ports[f->port_first], count * sizeof *out);
+    if (!c->extended) return count;
+    for (size_t i = 0; i < count; i++) {
+        if (out[i].kind != KENT_PORT_OUTLET) continue;
+        out[i].seal_diameter = fmax(out[i].seal_diameter, f->branch.outside_diameter);
+        there = true;
+    }
+    if (there) return count;
+    assert(count < KENT_PORTS);
+    out[count] = extended_leg(&f->branch);
+    return count + 1;
+}
+
+/* The place of a port: of the point of its pipe, else the centre at the port's level.
+ */
+static kent_vec3 port_place(const kent_model *m, const kent_fitting *f,
+                            const kent_port *port)
+{
+    kent_vec3 at = f->at;
+
+    if (port->kind == KENT_PORT_SPAN) {
+        const kent_span *span = &m->spans[port->span];
+        const size_t first = span->route_first;
+        size_t nearest = first;
+        for (size_t r = first; r < first + span->route_count; r++) {
+            const double gap =
+                fabs(m->chainage[r] - m->chainage[first] - port->chainage);
+            const double least =
+                fabs(m->chainage[nearest] - m->chainage[first] - port->chainage);
+            if (gap < least) nearest = r;
+        }
+        at = m->points[m->route[nearest]].at;
+    }
+    at.z = kent_port_level(f, port);
+    return at;
+}
+
+kent_vec3 kent_instant_couple(const kent_model *m, const kent_fitting *f,
+                              const kent_instant *i)
+{
+    kent_vec3 couple = {0.0, 0.0, 0.0};
+
+    for (size_t k = 0; k < f->port_count; k++) {
+        const kent_port *port = &m->ports[f->port_first + k];
+        const kent_vec3 arm = kent_vec3_sub(port_place(m, f, port), f->at);
+        const kent_vec3 push =
+            kent_vec3_scale(-i->balance.port[k].push, port->direction);
+        couple = kent_vec3_add(couple, kent_vec3_cross(arm, push));
+    }
+    return couple;
 }
 
 kent_instant kent_instant_given(const kent_model *m, const kent_fitting *f)

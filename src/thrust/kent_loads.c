@@ -1,8 +1,9 @@
-#include "kent_recorder_internal.h"
+#include "kent_press_internal.h"
 
 #include <math.h>
 #include <stdio.h>
 #include <stdlib.h>
+#include <string.h>
 
 static const double PI = 3.14159265358979323846;
 
@@ -19,12 +20,6 @@ double kent_thrust_azimuth(kent_vec3 thrust)
 
 static const kent_march NO_MARCH = {-1, -1};
 
-static double kind_factor(const kent_model *m, kent_case_kind kind)
-{
-    const double factor = m->loads.factor[kind];
-    return isnan(factor) ? m->rules.safety_factor : factor;
-}
-
 static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
                                  kent_case_kind kind, kent_march march)
 {
@@ -34,7 +29,7 @@ static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
         .kind = kind,
         .scenario = march.scenario,
         .state = march.state,
-        .safety_factor = kind_factor(m, kind),
+        .safety_factor = kent_press_factor(m, kind),
         .above_90_percent = NAN,
         .step = NAN,
     };
@@ -58,38 +53,16 @@ static void case_name(const kent_model *m, kent_load_case *c, const char *name)
     c->title = kent_name_in_state(m, c->name, c->state);
 }
 
-/* Pa under the field test, by elevation from where the gauge is read (9.1). */
-static double fitting_test_pressure(const kent_model *m, const kent_fitting *f)
-{
-    const int gauge = m->loads.test_gauge;
-    const double level = gauge >= 0 ? m->points[gauge].at.z : f->at.z;
-
-    return m->loads.test_pressure + m->water.density * m->gravity * (level - f->at.z);
-}
-
-/* Pa without flow under the highest connected level, or the one stated (9.2). */
-static double fitting_static_pressure(const kent_model *m, const kent_fitting *f)
-{
-    const kent_port *port = &m->ports[f->port_first];
-    const double level = kent_static_level(m, m->spans[port->span].node[0]);
-
-    return kent_model_pressure(m, level, f->at.z);
-}
-
+/* A case of still water under one pressure; NAN: there is none. */
 static void loads_add_at_rest(const kent_model *m, const kent_fitting *f,
+                              const char *name, kent_case_kind kind, double pressure,
                               kent_fitting_loads *loads)
 {
-    if (!isnan(m->loads.test_pressure)) {
-        kent_load_case *c = loads_add(m, loads, KENT_CASE_TEST, NO_MARCH);
-        const kent_instant i =
-            kent_instant_at_rest(m, f, fitting_test_pressure(m, f), -1);
-        case_name(m, c, "test");
-        case_fill(c, &i);
-    }
-    kent_load_case *c = loads_add(m, loads, KENT_CASE_STATIC, NO_MARCH);
-    const kent_instant i =
-        kent_instant_at_rest(m, f, fitting_static_pressure(m, f), -1);
-    case_name(m, c, "static");
+    if (isnan(pressure)) return;
+    kent_load_case *c = loads_add(m, loads, kind, NO_MARCH);
+    const kent_instant i = kent_instant_at_rest(m, f, pressure, -1);
+    c->later = strcmp(name, "future") == 0;
+    case_name(m, c, name);
     case_fill(c, &i);
 }
 
@@ -104,25 +77,14 @@ static void loads_add_steady(const kent_recorder *r, size_t state,
 
     for (size_t i = 0; i < f->port_count; i++) {
         const kent_port *port = &m->ports[f->port_first + i];
+        if (port->kind != KENT_PORT_SPAN) continue;
         frame.head[i] = kent_steady_head(m, s, port->span, port->chainage);
         frame.flow[i] = port->sign * s->span_flow[port->span];
     }
+    kent_frame_complete(m, f, &frame);
     const kent_instant i = kent_instant_of_frame(m, f, &frame);
     case_name(m, c, "steady");
     case_fill(c, &i);
-}
-
-static kent_case_kind scenario_kind(const kent_scenario *s)
-{
-    switch (s->class_of) {
-    case KENT_RECURRING:
-        return KENT_CASE_RECURRING;
-    case KENT_OCCASIONAL:
-        return KENT_CASE_OCCASIONAL;
-    case KENT_EXCEPTIONAL:
-        break;
-    }
-    return KENT_CASE_EXCEPTIONAL;
 }
 
 static void loads_add_march(const kent_recorder *r, size_t fitting, size_t index,
@@ -134,7 +96,7 @@ static void loads_add_march(const kent_recorder *r, size_t fitting, size_t index
     const kent_seen *seen = &slot->seen[fitting];
     const kent_fitting *f = &m->fittings[fitting];
     const kent_scenario *scenario = &m->scenarios[march.scenario];
-    kent_load_case *c = loads_add(m, loads, scenario_kind(scenario), march);
+    kent_load_case *c = loads_add(m, loads, kent_press_kind_of(scenario), march);
 
     case_name(m, c, scenario->id);
     if (seen->best[KENT_RESULTANT] < 0.0) return; /* not one instant was taken */
@@ -149,67 +111,79 @@ static void loads_add_march(const kent_recorder *r, size_t fitting, size_t index
     c->step = slot->step;
 }
 
-/* What presses on one side of a shut valve. */
-typedef struct kent_press {
-    kent_case_kind kind;
-    double pressure, time; /* Pa; s, NAN outside scenarios */
-    kent_march march;      /* -1, -1: none */
-} kent_press;
-
-/* Keeps the one that asks for more: with factors of their own the higher pressure need
- * not be it. */
-static void press_take(const kent_model *m, kent_press *most, kent_press p)
+/* A case of something shut, pressed by what asks for most there. */
+static kent_load_case *loads_add_pressed(const kent_model *m, kent_fitting_loads *loads,
+                                         const kent_press *most, const char *name)
 {
-    const double asks = kind_factor(m, p.kind) * p.pressure;
-    if (asks > kind_factor(m, most->kind) * most->pressure) *most = p;
+    kent_load_case *c = loads_add(m, loads, most->kind, most->march);
+
+    c->later = most->later;
+    case_name(m, c, name);
+    return c;
 }
 
 /* A valve shut with the most that can press on one side and nothing behind (9.4). */
-static void loads_add_closed(const kent_recorder *r, size_t fitting, size_t side,
-                             kent_fitting_loads *loads)
+static void loads_add_closed(const kent_recorder *r, const kent_site_test *test,
+                             size_t fitting, size_t side, kent_fitting_loads *loads)
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
     const int toward = m->ports[f->port_first + side].toward;
-    const kent_press at_rest = {KENT_CASE_STATIC, fitting_static_pressure(m, f), NAN,
-                                NO_MARCH};
-    kent_press most = at_rest;
+    const kent_press most = kent_press_most(r, test, fitting, side, false);
+    kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
     char name[sizeof((kent_load_case *)NULL)->name];
 
-    if (!isnan(m->loads.test_pressure)) {
-        most = (kent_press){KENT_CASE_TEST, fitting_test_pressure(m, f), NAN, NO_MARCH};
-        press_take(m, &most, at_rest);
-    }
-    for (size_t i = 0; i < m->march_count; i++) {
-        if (!r->slots[i].started) continue;
-        const kent_seen *seen = &r->slots[i].seen[fitting];
-        const kent_press peak = {
-            scenario_kind(&m->scenarios[m->marches[i].scenario]),
-            kent_model_pressure(m, seen->highest_head[side], f->at.z),
-            seen->highest_at[side], m->marches[i]};
-        press_take(m, &most, peak);
-    }
-    kent_load_case *c = loads_add(m, loads, most.kind, most.march);
-    kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
+    (void)snprintf(name, sizeof name, "closed from %s",
+                   m->points[toward >= 0 ? toward : f->point].id);
+    kent_load_case *c = loads_add_pressed(m, loads, &most, name);
     i.time = most.time;
     c->closed = true;
     c->pressed = side;
-    (void)snprintf(name, sizeof name, "closed from %s",
-                   m->points[toward >= 0 ? toward : f->point].id);
-    case_name(m, c, name);
+    case_fill(c, &i);
+}
+
+/* Whether a pipe may be joined to a branch that pushes nothing as built: its end is no
+ * port, or an open one that may be shut. At a pipe's end a bolted hydrant is the end.
+ */
+static bool may_be_extended(const kent_model *m, const kent_fitting *f)
+{
+    bool outlet = false;
+
+    if (f->branch.end == KENT_BRANCH_NONE) return false;
+    for (size_t i = 0; i < f->port_count; i++) {
+        const kent_port *port = &m->ports[f->port_first + i];
+        if (port->kind == KENT_PORT_STUB) return false;
+        outlet = outlet || port->kind == KENT_PORT_OUTLET;
+    }
+    return !outlet || f->type != KENT_DEAD_END || kent_joint_slips(f->branch.joint);
+}
+
+/* The branch once a pipe is joined to it (9.13). */
+static void loads_add_extended(const kent_recorder *r, const kent_site_test *test,
+                               size_t fitting, kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[fitting];
+    const size_t widest = kent_port_widest(&m->ports[f->port_first], f->port_count);
+    const kent_press most = kent_press_most(r, test, fitting, widest, true);
+    kent_load_case *c = loads_add_pressed(m, loads, &most, "branch extended");
+
+    c->extended = true;
+    kent_instant i = kent_instant_extended(m, f, c, most.pressure);
+    i.time = most.time;
     case_fill(c, &i);
 }
 
 /* ---- all of them ----------------------------------------------------------------- */
 
-static int loads_of_fitting(const kent_recorder *r, size_t index,
-                            kent_fitting_loads *loads)
+static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
+                            size_t index, kent_fitting_loads *loads)
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
+    const size_t most = 4 + m->state_count + m->march_count + KENT_PORTS;
 
-    loads->cases = kent_alloc(2 + m->state_count + m->march_count + KENT_PORTS,
-                              sizeof *loads->cases);
+    loads->cases = kent_alloc(most, sizeof *loads->cases);
     if (!loads->cases) return -1;
     if (!kent_fitting_in_network(f)) {
         kent_load_case *c = loads_add(m, loads, KENT_CASE_STEADY, NO_MARCH);
@@ -219,17 +193,55 @@ static int loads_of_fitting(const kent_recorder *r, size_t index,
         case_fill(c, &i);
         return 0;
     }
-    loads_add_at_rest(m, f, loads);
+    loads_add_at_rest(m, f, "test", KENT_CASE_TEST, kent_press_of_test(m, test, f),
+                      loads);
+    loads_add_at_rest(m, f, "static", KENT_CASE_STATIC, kent_press_static(m, f), loads);
     for (size_t s = 0; s < m->state_count; s++) {
         loads_add_steady(r, s, f, loads);
     }
+    loads_add_at_rest(m, f, "future", KENT_CASE_STATIC, kent_press_later(m, f), loads);
     for (size_t i = 0; i < m->march_count; i++) {
         if (r->slots[i].started) loads_add_march(r, index, i, loads);
     }
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
-        loads_add_closed(r, index, i, loads);
+        loads_add_closed(r, test, index, i, loads);
+    }
+    if (may_be_extended(m, f)) loads_add_extended(r, test, index, loads);
+    for (size_t i = 0; i < loads->count; i++) {
+        loads->cases[i].test = test;
     }
     return 0;
+}
+
+/* The highest pressure of all marches at any fitting; point -1: none was run. */
+static kent_worst worst_of_marches(const kent_recorder *r, bool *partial)
+{
+    const kent_model *m = r->model;
+    kent_worst worst = {.pressure = NAN, .level = NAN, .point = -1, .when = ""};
+
+    for (size_t k = 0; k < m->march_count; k++) {
+        *partial = *partial || !r->slots[k].started;
+        for (size_t i = 0; r->slots[k].started && i < m->fitting_count; i++) {
+            const kent_fitting *f = &m->fittings[i];
+            const double head = r->slots[k].seen[i].highest;
+            const double pressure = kent_model_pressure(m, head, f->at.z);
+            if (!kent_fitting_in_network(f) || !isfinite(pressure)) continue;
+            if (pressure <= worst.pressure) continue; /* NAN: the first */
+            worst = (kent_worst){pressure, f->at.z, f->point,
+                                 m->scenarios[m->marches[k].scenario].id};
+        }
+    }
+    return worst;
+}
+
+static kent_site_test test_of(const kent_recorder *r)
+{
+    bool partial = false;
+    const kent_worst surge = worst_of_marches(r, &partial);
+    kent_site_test test = kent_site_test_find(r->model, r->steadies, &surge);
+
+    test.partial = partial && test.rule == KENT_TEST_EN805_CALCULATED;
+    return test;
 }
 
 kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
@@ -246,8 +258,9 @@ kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out
     for (size_t i = 0; i < r->model->march_count; i++) {
         if (r->slots[i].failed) goto done;
     }
+    loads->test = test_of(r);
     for (size_t i = 0; i < count; i++) {
-        if (loads_of_fitting(r, i, &loads->fittings[i])) goto done;
+        if (loads_of_fitting(r, &loads->test, i, &loads->fittings[i])) goto done;
     }
     *out = loads;
     loads = NULL; /* handed over */

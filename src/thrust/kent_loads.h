@@ -9,6 +9,7 @@
 #include "kent_balance.h"
 #include "kent_derivation.h"
 #include "kent_marcher.h"
+#include "kent_site_test.h"
 
 /* The four ways a thrust can be worst. */
 typedef enum kent_sense {
@@ -27,7 +28,8 @@ typedef struct kent_instant {
 } kent_instant;
 
 typedef struct kent_load_case {
-    /* "test", "static", "steady", a scenario's id, "closed from P", "given" */
+    /* "test", "static", "steady", "future", a scenario's id, "closed from P", "branch
+     * extended", "given" */
     char name[KENT_ID + 16];
     kent_name title;     /* as printed: its name and, among several, its state's */
     kent_case_kind kind; /* whose safety factor it takes */
@@ -36,6 +38,10 @@ typedef struct kent_load_case {
     bool given;          /* the one case of a ports-only fitting */
     bool closed;         /* of a shut valve, pressed from one side only: */
     size_t pressed;      /* which port */
+    bool extended;       /* a branch without a pipe, once one is joined to it */
+    bool later;          /* under the pressure expected later */
+    const kent_site_test *test; /* of the result: how the test pressure was found; NULL:
+                                   as stated */
     double safety_factor;
     kent_instant worst[KENT_SENSES];
     kent_instant lowest, highest; /* of a scenario: by the head; what pulls is not
@@ -53,6 +59,7 @@ typedef struct kent_fitting_loads {
 typedef struct kent_loads_result {
     kent_fitting_loads *fittings; /* [fitting_count] */
     size_t fitting_count;
+    kent_site_test test;
 } kent_loads_result;
 
 typedef struct kent_recorder kent_recorder;
@@ -84,6 +91,16 @@ void kent_loads_free(kent_loads_result *l);
 /* N: the thrust without the force of the changing flow (8.7), which never governs. */
 kent_vec3 kent_instant_lasting(const kent_instant *i);
 
+/* The ports that a case's balance is made of, in its order: the fitting's own and,
+ * where a branch is extended, that branch behind them. Returns how many. */
+size_t kent_load_case_ports(const kent_model *m, const kent_fitting *f,
+                            const kent_load_case *c, kent_port out[KENT_PORTS]);
+
+/* N m, about the fitting's centre: what the pushes of a group leave although their sum
+ * may be nil (docs/theory 8.15). NAN where no coordinates are given. */
+kent_vec3 kent_instant_couple(const kent_model *m, const kent_fitting *f,
+                              const kent_instant *i);
+
 /* The horizontal size of a thrust, and its azimuth (rad, clockwise from north, 0 .. 2
  * pi). */
 double kent_thrust_horizontal(kent_vec3 thrust);
@@ -96,5 +113,9 @@ double kent_thrust_azimuth(kent_vec3 thrust);
 void kent_loads_derive(const kent_model *m, const kent_fitting *fitting,
                        const kent_load_case *load, kent_sense sense,
                        kent_derivation *d);
+
+/* The lines p_later and z_later: the pressure expected later, and where it is read. */
+void kent_loads_derive_later(const kent_model *m, const kent_fitting *f,
+                             kent_derivation *d);
 
 #endif

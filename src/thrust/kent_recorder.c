@@ -57,16 +57,45 @@ static double fitting_crossing(const kent_model *m, const kent_fitting *f)
 
     for (size_t i = 0; i < f->port_count; i++) {
         const kent_port *port = &m->ports[f->port_first + i];
-        slowest = fmin(slowest, m->spans[port->span].wave_speed);
+        if (port->kind == KENT_PORT_SPAN) {
+            slowest = fmin(slowest, m->spans[port->span].wave_speed);
+        }
         next = fmax(next, fmin(longest, port->face));
         longest = fmax(longest, port->face);
     }
     return 2.0 * (longest + next) / slowest;
 }
 
+/* N s2/m6: the momentum flux of a port over the square of its flow, beta held at the
+ * steady one or a usual one. */
+static double flux_per_square(const kent_model *m, const kent_port *port, double flow)
+{
+    const double bore = 0.25 * PI * port->inside_diameter * port->inside_diameter;
+    const double usual = fmax(fabs(flow), USUAL_SPEED * bore);
+
+    return kent_port_momentum_factor(m, port, usual) * m->water.density / bore;
+}
+
+/* An open end: no pressure, and the stream that the others bring (8.13). */
+static void sensor_add_outlet(const kent_steady *s, const kent_fitting *f, size_t i,
+                              kent_sensor *sensor)
+{
+    const kent_port *ports = &s->model->ports[f->port_first];
+    double flow = 0.0;
+
+    for (size_t k = 0; k < f->port_count; k++) {
+        if (ports[k].kind != KENT_PORT_SPAN) continue;
+        sensor->brings[k] = ports[k].sign;
+        flow += ports[k].sign * s->span_flow[ports[k].span];
+    }
+    sensor->outlet = true;
+    sensor->per_outlet_square = kent_vec3_scale(
+        -flux_per_square(s->model, &ports[i], flow), ports[i].direction);
+}
+
 /* Coefficients of one port's push: F = per_head H + own Q^2 + widest Q_ref^2 +
- * constant, from 8.1 with the pressure of 8.3; Q^2 is the same for flow either way.
- */
+ * constant, from 8.1 with the pressure of 8.3; Q^2 is the same for flow either way. A
+ * dead branch has no Q of its own. */
 static int sensor_add_port(kent_recorder *r, const kent_steady *s,
                            const kent_fitting *f, size_t i, kent_sensor *sensor)
 {
@@ -78,21 +107,26 @@ static int sensor_add_port(kent_recorder *r, const kent_steady *s,
     const double bore = 0.25 * PI * port->inside_diameter * port->inside_diameter;
     const double wide =
         0.25 * PI * ports[widest].inside_diameter * ports[widest].inside_diameter;
-    const double flow = fmax(fabs(s->span_flow[port->span]), USUAL_SPEED * bore);
-    const double beta = kent_port_momentum_factor(m, port, flow);
+    const double level = kent_port_level(f, port);
     const kent_vec3 inward = kent_vec3_scale(-1.0, port->direction);
+    const bool streams = port->kind == KENT_PORT_SPAN;
 
     kent_term *own = recorder_term(r, sensor, sensor->watch[i]);
     if (!own) return -1;
     own->per_head =
         kent_vec3_add(own->per_head, kent_vec3_scale(rho * gravity * seal, inward));
-    own->per_square =
-        kent_vec3_add(own->per_square, kent_vec3_scale(beta * rho / bore, inward));
     sensor->constant = kent_vec3_add(
-        sensor->constant, kent_vec3_scale(-rho * gravity * f->at.z * seal, inward));
+        sensor->constant, kent_vec3_scale(-rho * gravity * level * seal, inward));
+    if (streams) {
+        const double flux = flux_per_square(m, port, s->span_flow[port->span]);
+        own->per_square = kent_vec3_add(own->per_square, kent_vec3_scale(flux, inward));
+    }
     if (f->type == KENT_VALVE || i == widest) return 0;
-    own->per_square = kent_vec3_add(
-        own->per_square, kent_vec3_scale(-0.5 * rho * seal / (bore * bore), inward));
+    if (streams) {
+        own->per_square =
+            kent_vec3_add(own->per_square,
+                          kent_vec3_scale(-0.5 * rho * seal / (bore * bore), inward));
+    }
     kent_term *reference = recorder_term(r, sensor, sensor->watch[widest]);
     if (!reference) return -1;
     reference->per_square =
@@ -106,11 +140,17 @@ static int recorder_watch_fitting(kent_recorder *r, const kent_fitting *f,
                                   size_t *watch)
 {
     const size_t first = r->watch_count;
+    const kent_port *ports = &r->model->ports[f->port_first];
+    const size_t widest = kent_port_widest(ports, f->port_count);
 
     assert(f->port_count <= KENT_PORTS);
     for (size_t i = 0; i < f->port_count; i++) {
-        const kent_port *port = &r->model->ports[f->port_first + i];
+        const kent_port *port = &ports[i];
+        if (port->kind != KENT_PORT_SPAN) continue;
         if (recorder_watch(r, first, port->span, port->chainage, &watch[i])) return -1;
+    }
+    for (size_t i = 0; i < f->port_count; i++) {
+        if (ports[i].kind != KENT_PORT_SPAN) watch[i] = watch[widest];
     }
     return 0;
 }
@@ -130,7 +170,11 @@ static int recorder_add_fitting(kent_recorder *r, size_t state, size_t index)
     }
     if (f->weight > 0.0) sensor->constant = (kent_vec3){0.0, 0.0, -f->weight};
     for (size_t i = 0; i < f->port_count; i++) {
-        if (sensor_add_port(r, r->steadies[state], f, i, sensor)) return -1;
+        if (m->ports[f->port_first + i].kind == KENT_PORT_OUTLET) {
+            sensor_add_outlet(r->steadies[state], f, i, sensor);
+        } else if (sensor_add_port(r, r->steadies[state], f, i, sensor)) {
+            return -1;
+        }
     }
     sensor->crossing = fitting_crossing(m, f);
     return 0;
@@ -294,6 +338,7 @@ static void seen_keep(const kent_recorder *r, const kent_slot *slot,
         frame->flow_rate[i] =
             (frame->flow[i] - before) / ((double)lag * slot->step); /* 8.7 */
     }
+    kent_frame_complete(m, f, frame);
 }
 
 /* Thrusts of consecutive instants, component by component: the shape compilers
@@ -303,6 +348,25 @@ enum { CHUNK = 64 };
 typedef struct kent_thrusts {
     double x[CHUNK], y[CHUNK], z[CHUNK]; /* N */
 } kent_thrusts;
+
+/* What the stream of an open end adds, for `count` instants. */
+static void sensor_add_streams(const kent_sensor *sensor, size_t ports,
+                               const kent_trace *trace, size_t first, size_t count,
+                               kent_thrusts *out)
+{
+    const size_t width = trace->watch_count;
+
+    for (size_t n = 0; n < count; n++) {
+        const double *flow = trace->flow + (first + n) * width;
+        double drawn = 0.0;
+        for (size_t k = 0; k < ports; k++) {
+            drawn += sensor->brings[k] * flow[sensor->watch[k]];
+        }
+        out->x[n] += sensor->per_outlet_square.x * drawn * drawn;
+        out->y[n] += sensor->per_outlet_square.y * drawn * drawn;
+        out->z[n] += sensor->per_outlet_square.z * drawn * drawn;
+    }
+}
 
 /* 9.6 for `count` instants from row `first` of the trace. */
 static void sensor_thrusts(const kent_recorder *r, const kent_sensor *sensor,
@@ -338,12 +402,14 @@ static void seen_take(const kent_recorder *r, const kent_sensor *sensor,
 {
     kent_seen *seen = &slot->seen[index];
     size_t at[KENT_SENSES];
+    const size_t ports = r->model->fittings[index].port_count;
     bool better[KENT_SENSES] = {false};
     kent_thrusts t;
 
     for (size_t first = 0; first < trace->count; first += CHUNK) {
         const size_t left = trace->count - first, count = left < CHUNK ? left : CHUNK;
         sensor_thrusts(r, sensor, trace, first, count, &t);
+        if (sensor->outlet) sensor_add_streams(sensor, ports, trace, first, count, &t);
         for (size_t n = 0; n < count; n++) {
             const double sideways = t.x[n] * t.x[n] + t.y[n] * t.y[n];
             const double all = sideways + t.z[n] * t.z[n];

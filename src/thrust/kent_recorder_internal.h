@@ -22,9 +22,12 @@ typedef struct kent_term {
 
 typedef struct kent_sensor { /* of one fitting in one state: beta is that state's */
     size_t term_first, term_count;
-    size_t watch[KENT_PORTS]; /* by port */
-    kent_vec3 constant;       /* N */
-    double crossing;          /* s, a wave across the fitting and back; 0: no face */
+    size_t watch[KENT_PORTS];  /* by port; of one without a pipe the reference port's */
+    bool outlet;               /* it has an open end: */
+    double brings[KENT_PORTS]; /* by port: +1, -1 of those with pipes, else 0 */
+    kent_vec3 per_outlet_square; /* N s2/m6, on the square of what they bring (8.13) */
+    kent_vec3 constant;          /* N */
+    double crossing;             /* s, a wave across the fitting and back; 0: no face */
 } kent_sensor;
 
 /* Instants counted by their level: the leading bits of the squared resultant, 1024 to a
@@ -84,6 +87,10 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
  * end, or at port `only` alone. */
 kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
                                   double pressure, int only);
+
+/* The balance at rest of a branch extended: every end closed, under one pressure. */
+kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,
+                                   const kent_load_case *c, double pressure);
 
 /* The balance of the pressures and flows that the ports state themselves. */
 kent_instant kent_instant_given(const kent_model *m, const kent_fitting *f);

@@ -1,5 +1,7 @@
 #include "kent_site_test.h"
 
+#include "kent_said.h"
+
 #include <math.h>
 #include <stdio.h>
 
@@ -10,6 +12,8 @@ static const double C600_AT_GAUGE = 1.5, C600_AT_TOP = 1.25;
 /* EN 805:2000, 11.3.2: system test pressure over the maximum design pressure. */
 static const double EN805_CALCULATED = 100e3;                         /* Pa */
 static const double EN805_ASSUMED_RATIO = 1.5, EN805_ASSUMED = 500e3; /* -, Pa */
+
+static const double LEVEL = 0.01; /* m: points this near are at one level */
 
 double kent_site_test_by_factor(double working, double factor)
 {
@@ -176,6 +180,41 @@ const char *kent_site_test_rule_word(kent_test_rule rule)
         break;
     }
     return "given";
+}
+
+void kent_site_test_caution(const kent_model *m, const kent_site_test *t,
+                            kent_notes *cautions)
+{
+    const int lowest = kent_site_test_lowest_point(m);
+    const char *rule = kent_site_test_rule_word(t->rule);
+
+    if (t->rule == KENT_TEST_FIXED || lowest < 0) return;
+    if (isnan(t->pressure)) {
+        kent_notes_add(
+            cautions,
+            "test_rule %s: no test pressure could be found, so no fitting is "
+            "held against the site test; read it at a point of a pipe's "
+            "route",
+            rule);
+        return;
+    }
+    if (t->gauge >= 0 && m->points[lowest].at.z < m->points[t->gauge].at.z - LEVEL) {
+        kent_notes_add(
+            cautions,
+            "test_rule %s means a gauge at the lowest point, \"%s\"; read at "
+            "\"%s\", %s above it, the lower points are tested at more",
+            rule, m->points[lowest].id, m->points[t->gauge].id,
+            kent_said_of(KENT_LENGTH, m->units,
+                         m->points[t->gauge].at.z - m->points[lowest].at.z)
+                .s);
+    }
+    if (t->partial) {
+        kent_notes_add(
+            cautions,
+            "test_rule %s asks for every scenario, but not all were run: the "
+            "test pressure may be too low",
+            rule);
+    }
 }
 
 /* ---- the hand calculation -------------------------------------------------------- */

@@ -63,6 +63,11 @@ const char *kent_site_test_rule_word(kent_test_rule rule);
 void kent_site_test_derive(const kent_model *m, const kent_site_test *t,
                            double own_level, kent_derivation *d);
 
+/* What of a test found by rule wants a second look: a gauge above the lowest point,
+ * marches that were not run, a pressure that could not be found. */
+void kent_site_test_caution(const kent_model *m, const kent_site_test *t,
+                            kent_notes *cautions);
+
 /* The lowest point of all pipes' routes; -1: no pipe. */
 int kent_site_test_lowest_point(const kent_model *m);
 

@@ -40,6 +40,7 @@ static const coherent COHERENT[] = {
     {KENT_MODULUS, "kPa", 1e3, "lbf/ft2", -2, 1},
     {KENT_FORCE, "kN", 1e3, "lbf", 0, 1},
     {KENT_FORCE_PER_LENGTH, "kN/m", 1e3, "lbf/ft", -1, 1},
+    {KENT_MOMENT, "kN m", 1e3, "lbf ft", 1, 1},
     {KENT_UNIT_WEIGHT, "kN/m3", 1e3, "lbf/ft3", -3, 1},
     {KENT_DENSITY, "t/m3", 1e3, "slug/ft3", -4, 1},
     {KENT_VISCOSITY, "kPa s", 1e3, "lbf s/ft2", -2, 1},

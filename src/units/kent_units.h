@@ -25,6 +25,7 @@
     X(KENT_FORCE, "a force", "N", "kN", 1, "kip", 1, "25 kN", "5600 lbf")              \
     X(KENT_FORCE_PER_LENGTH, "a force per length", "N/m", "kN/m", 2, "lbf/ft", 0,      \
       "5.3 kN/m", "365 lbf/ft")                                                        \
+    X(KENT_MOMENT, "a moment", "N m", "kN m", 1, "kip ft", 1, "25 kN m", "18 kip ft")  \
     X(KENT_UNIT_WEIGHT, "a unit weight", "N/m3", "kN/m3", 1, "pcf", 1, "19 kN/m^3",    \
       "120 pcf")                                                                       \
     X(KENT_DENSITY, "a density", "kg/m3", "kg/m3", 1, "lb/ft3", 2, "998 kg/m^3",       \

@@ -236,7 +236,7 @@ static void units_that_only_look_alike_are_refused(void **state)
     assert_refused("5600 lb", KENT_FORCE, "is not a force");          /* a mass */
     assert_refused("12 C", KENT_TEMPERATURE, "is not a temperature"); /* coulomb */
     assert_refused("15 mpa", KENT_PRESSURE, "is not a unit");
-    assert_refused("1 N m", KENT_FORCE, "is not a force");
+    assert_refused("1 N m", KENT_FORCE, "is a moment where a force belongs");
     assert_refused("1 psi head", KENT_PRESSURE, "is not a pressure");
     assert_refused("1 m rad", KENT_LENGTH, "is not a length");
 }
