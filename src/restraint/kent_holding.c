@@ -1,4 +1,5 @@
 #include "kent_holding_internal.h"
+#include "kent_said.h"
 #include "kent_side_internal.h"
 
 #include <limits.h>
@@ -161,6 +162,30 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
 
 /* ---- restrained length ----------------------------------------------------------- */
 
+/* Says what a leg passes through without being held, and what trench is guessed at. */
+static void leg_note(kent_holding_work *w, const kent_leg_work *work)
+{
+    const kent_system units = w->m->units;
+
+    for (size_t i = 0; i < work->piece_count; i++) {
+        const kent_leg_piece *at = &work->piece[i];
+        if (!at->counts) {
+            kent_notes_add(&w->met,
+                           "the restrained length passes through %s of %s, which holds "
+                           "nothing",
+                           kent_said_of(KENT_LENGTH, units, at->length).s,
+                           at->soil->id);
+        } else if (work->bears && at->trench_kind >= 0 &&
+                   isnan(at->soil->passive_by_trench[at->trench_kind])) {
+            kent_notes_add(&w->met,
+                           "soil '%s' has no share of passive pressure for a trench of "
+                           "%s: its passive_ratio, %g, is taken",
+                           at->soil->id, kent_trench_word(at->trench_kind),
+                           at->trench.passive_ratio);
+        }
+    }
+}
+
 static kent_leg leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
 {
     const double laying = work->pipe->laying_length;
@@ -176,7 +201,8 @@ static kent_leg leg_of(kent_holding_work *w, size_t port, const kent_leg_work *w
         .port = port,
         .length = work->length,
         .pipes = pipes,
-        .fits = kent_leg_fits(w->m, w->standings, w->index, port, length, &w->met),
+        .fits = kent_leg_fits(w->m, w->standings, w->index, port, length, work->own,
+                              &w->met),
     };
 }
 
@@ -220,7 +246,9 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
             kent_leg_prepare(w->m, w->fitting, k, w->pull, w->pull_factor, &work);
         wanted++;
         w->lack |= lack;
+        if (work.lacking) w->lacking = work.lacking;
         if (lack != 0) continue;
+        leg_note(w, &work);
         h->legs[h->leg_count++] = leg_of(w, k, &work);
         h->restrained_length = fmax(h->restrained_length, work.length);
     }

@@ -20,9 +20,10 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     double factored[KENT_SENSES]; /* N, greatest over the cases */
     kent_demand demand;           /* the same without what is negligible */
     kent_fault fault;
-    double use[KENT_SENSES]; /* of the block */
-    unsigned lack;           /* kent_lack, over all legs */
-    kent_vec3 pull;          /* N, the thrust that the legs are worked out for */
+    double use[KENT_SENSES];  /* of the block */
+    unsigned lack;            /* kent_lack, over all legs */
+    const kent_soil *lacking; /* whose values are missing; NULL */
+    kent_vec3 pull;           /* N, the thrust that the legs are worked out for */
     double pull_factor;
     kent_notes met; /* what the legs meet; owned */
 } kent_holding_work;

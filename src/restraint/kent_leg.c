@@ -22,6 +22,8 @@ static const kent_leg_rule RULES[] = {
     {0, 1, "behind the end", KENT_DEAD_END, false, false},
     {0, 2, "on both sides, for a push from either", KENT_VALVE, false, false},
     {0, 0, "nowhere", KENT_STRAIGHT, false, false},
+    {0, 0, "nowhere", KENT_CURVE, false, false},
+    {0, KENT_PORTS, "on each outer leg", KENT_GROUP, false, false},
 };
 
 static const kent_leg_rule TURNED_REDUCER = {0,     2,    "on each leg", KENT_REDUCER,
@@ -80,99 +82,28 @@ bool kent_leg_bears(const kent_fitting *fitting, kent_vec3 thrust)
 
 /* ---- one leg --------------------------------------------------------------------- */
 
-/* N per m of empty pipe; NAN: not known. source 11.1 */
-static double pipe_weight(const kent_pipe *p, double gravity)
-{
-    const double mean = p->outside_diameter - p->wall;
-    if (!isnan(p->unit_mass)) return p->unit_mass * gravity;
-    return PI * mean * p->wall * p->material_density * gravity;
-}
-
-/* A ratio matters unless what it multiplies is stated to be nil. */
-static unsigned soil_lacks(const kent_soil *s, bool bears)
-{
-    unsigned lack = 0;
-
-    if (isnan(s->unit_weight)) lack |= KENT_LACK_UNIT_WEIGHT;
-    if (isnan(s->friction_angle)) lack |= KENT_LACK_FRICTION_ANGLE;
-    if (isnan(s->cohesion)) lack |= KENT_LACK_COHESION;
-    if (isnan(s->friction_ratio) && !(s->friction_angle <= 0.0)) {
-        lack |= KENT_LACK_FRICTION_RATIO;
-    }
-    if (isnan(s->adhesion_ratio) && !(s->cohesion <= 0.0)) {
-        lack |= KENT_LACK_ADHESION_RATIO;
-    }
-    if (isnan(s->passive_ratio) && bears) lack |= KENT_LACK_PASSIVE_RATIO;
-    return lack;
-}
-
-/* A value that does not matter may be missing: what it multiplies is nil. */
-static double known(double value) { return isnan(value) ? 0.0 : value; }
-
-static void leg_grip(const kent_model *m, const kent_fitting *f, kent_leg_work *w)
-{
-    const kent_pipe *p = w->pipe;
-    const kent_soil *s = w->soil;
-    const double od = p->outside_diameter, bore = p->inside_diameter;
-    const bool wet = f->water_table < f->cover + od;
-    const double water = wet ? m->rules.water_unit_weight : 0.0;
-
-    w->pipe_weight = pipe_weight(p, m->gravity);
-    w->displaced = water * 0.25 * PI * od * od;
-    w->sleeve = m->ground.wrapped ? m->rules.wrapped_ratio : 1.0;
-    w->trench = (kent_trench){
-        .outside_diameter = od,
-        .cover = f->cover,
-        .pipe_weight = w->pipe_weight - w->displaced,
-        .water_weight = m->water.density * m->gravity * 0.25 * PI * bore * bore,
-        .unit_weight = s->unit_weight - water,
-        .friction_angle = s->friction_angle,
-        .cohesion = s->cohesion,
-        .friction_ratio = known(s->friction_ratio),
-        .adhesion_ratio = known(s->adhesion_ratio),
-        .passive_ratio = known(s->passive_ratio),
-    };
-    w->grip = kent_soil_grip_of(&w->trench);
-    w->friction = w->sleeve * (w->bend ? w->grip.friction : w->grip.friction_whole);
-    w->bearing = w->bears ? w->grip.bearing : 0.0;
-}
-
 unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size_t port,
                           kent_vec3 thrust, double factor, kent_leg_work *out)
 {
     const kent_port *p = &m->ports[fitting->port_first + port];
     const kent_leg_rule *rule = kent_leg_rule_of(fitting);
     const double push = kent_vec3_length(thrust);
-    unsigned lack = 0;
 
     *out = (kent_leg_work){.factor = factor, .angle = fitting->angle, .length = NAN};
     out->bend = rule->bend && fitting->angle > LEAST_TURN;
     out->turns_back = out->bend && fitting->angle > 0.5 * PI + LEAST_TURN;
     out->bears = !out->turns_back && kent_leg_bears(fitting, thrust);
     if (p->span < 0) return KENT_LACK_PIPE;
-    if (fitting->soil < 0) return KENT_LACK_SOIL;
     out->pipe = &m->pipes[m->spans[p->span].pipe];
-    out->soil = &m->soils[fitting->soil];
-    if (!kent_soil_counts(out->soil)) return KENT_LACK_SOIL;
 
-    lack = soil_lacks(out->soil, out->bears);
-    if (isnan(fitting->cover)) lack |= KENT_LACK_COVER;
-    if (isnan(pipe_weight(out->pipe, m->gravity))) lack |= KENT_LACK_PIPE_MASS;
-    if (lack != 0) return lack;
-
-    leg_grip(m, fitting, out);
-    if (out->bend) {
-        out->force = push / (2.0 * sin(0.5 * fitting->angle)); /* 11.8 */
-        out->length =
-            out->turns_back
-                ? kent_restrained_length_end(out->force, factor, out->friction)
-                : kent_restrained_length_bend(out->force, fitting->angle, factor,
-                                              out->friction, out->bearing);
-    } else {
-        out->force = push;
-        out->length = kent_restrained_length_end(push, factor, out->friction);
-    }
-    return isfinite(out->length) ? 0 : KENT_LACK_GRIP;
+    /* what a resistance of 1 N/m would need as a length, it needs as a force */
+    out->force = push;
+    if (out->bend) out->force = push / (2.0 * sin(0.5 * fitting->angle)); /* 11.8 */
+    out->demand =
+        out->bend && !out->turns_back
+            ? kent_restrained_length_bend(out->force, fitting->angle, factor, 1.0, 0.0)
+            : kent_restrained_length_end(out->force, factor, 1.0);
+    return kent_leg_pieces(m, fitting, p, out);
 }
 
 /* ---- how far it may run ---------------------------------------------------------- */
@@ -280,30 +211,11 @@ static size_t route_search(const kent_model *m, const kent_span *s, double x)
     return lo;
 }
 
-int kent_leg_sound(const kent_model *m, const kent_port *port, double *distance)
-{
-    const kent_span *span = &m->spans[port->span];
-    const kent_pipe *pipe = &m->pipes[span->pipe];
-    const double here = m->chainage[span->route_first] + port->chainage;
-    const bool ahead = port->sign > 0.0;
-    const size_t first = pipe->route_first, end = first + pipe->route_count;
-    size_t i =
-        route_search(m, span, port->chainage + (ahead ? SAME_PLACE : -SAME_PLACE));
-
-    *distance = ahead ? m->chainage[end - 1] - here : here - m->chainage[first];
-    /* ahead: the first point beyond; back: one after the first point before */
-    for (; ahead ? i < end : i > first; i = ahead ? i + 1 : i - 1) {
-        const size_t k = ahead ? i : i - 1;
-        if (!kent_soil_counts(kent_point_soil(m, m->route[k]))) continue;
-        *distance = fabs(m->chainage[k] - here);
-        return m->route[k];
-    }
-    return -1;
-}
-
-/* Whether the ground along the leg can be relied on at every point of it. */
+/* Whether the ground along the leg can be relied on at every point of it: at those with
+ * a soil of their own, and within its first `own` (m), where the fitting's ground is
+ * taken to go on. */
 static bool leg_ground(const kent_model *m, const kent_port *p, double length,
-                       kent_notes *notes)
+                       double own, kent_notes *notes)
 {
     const kent_span *span = &m->spans[p->span];
     const bool ahead = p->sign > 0.0;
@@ -312,7 +224,10 @@ static bool leg_ground(const kent_model *m, const kent_port *p, double length,
     const size_t end = span->route_first + span->route_count;
 
     for (size_t i = route_search(m, span, from); i < end; i++) {
-        if (m->chainage[i] - m->chainage[span->route_first] > to) break;
+        const double there = m->chainage[i] - m->chainage[span->route_first];
+        if (there > to) break;
+        const bool beyond = fabs(there - p->chainage) > own;
+        if (beyond && m->points[m->route[i]].soil < 0) continue; /* it is a piece's */
         const kent_soil *soil = kent_point_soil(m, m->route[i]);
         if (!soil || kent_soil_counts(soil)) continue; /* not stated: the fitting's */
         kent_notes_add(notes,
@@ -325,7 +240,7 @@ static bool leg_ground(const kent_model *m, const kent_port *p, double length,
 }
 
 bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t fitting,
-                   size_t port, double length, kent_notes *notes)
+                   size_t port, double length, double own, kent_notes *notes)
 {
     const kent_fitting *f = &m->fittings[fitting];
     const kent_port *p = &m->ports[f->port_first + port];
@@ -333,7 +248,7 @@ bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t 
     const double there = p->sign > 0.0 ? span->length - p->chainage : p->chainage;
 
     if (!leg_meets(m, standings, fitting, p, fmin(length, there), notes)) return false;
-    if (!leg_ground(m, p, fmin(length, there), notes)) return false;
+    if (!leg_ground(m, p, fmin(length, there), own, notes)) return false;
     if (length <= there + SAME_PLACE) return true;
     const int node = span->node[p->sign > 0.0 ? 1 : 0];
     kent_notes_add(

@@ -29,19 +29,32 @@ typedef enum kent_lack {
     KENT_LACK_PASSIVE_RATIO = 32,
     KENT_LACK_COVER = 64,
     KENT_LACK_PIPE_MASS = 128,
-    KENT_LACK_SOIL = 256, /* not stated, or cannot be relied on */
-    KENT_LACK_PIPE = 512, /* the leg is no pipe of the network */
-    KENT_LACK_GRIP = 1024 /* the values given make no friction at all */
+    KENT_LACK_SOIL = 256,   /* not stated, or cannot be relied on */
+    KENT_LACK_PIPE = 512,   /* the leg is no pipe of the network */
+    KENT_LACK_GRIP = 1024,  /* the values given make no friction at all */
+    KENT_LACK_SOUND = 2048, /* from somewhere on, no ground along the leg counts */
+    KENT_LACK_PIECES = 4096 /* more changes of ground than KENT_LEG_PIECES */
 } kent_lack;
+
+enum { KENT_LEG_PIECES = 8 }; /* most stretches of different ground along one leg */
+
+/* A leg's stretch in one kind of ground: to the edge of a zone, or to its end. */
+typedef struct kent_leg_piece {
+    const kent_soil *soil;
+    int trench_kind; /* -1: not stated */
+    bool counts;     /* false: ground that can't be relied on, passed through */
+    kent_trench trench;
+    kent_soil_grip grip;
+    double displaced;         /* N/m, 0 above the water table */
+    double friction, bearing; /* N/m, as used */
+    double resistance;        /* N/m, of both */
+    double length;            /* m */
+} kent_leg_piece;
 
 /* Everything that gives one leg's length, kept for the hand calculation. */
 typedef struct kent_leg_work {
     const kent_pipe *pipe;
-    const kent_soil *soil;
-    kent_trench trench;
-    kent_soil_grip grip;
     double pipe_weight; /* N/m, before the water displaced is taken off */
-    double displaced;   /* N/m, 0 above the water table */
     double sleeve;      /* factor on friction: 1 for a bare pipe */
     bool bend;          /* half the perimeter; else the whole */
     bool bears;         /* half the passive resistance counts */
@@ -49,8 +62,12 @@ typedef struct kent_leg_work {
     double force;       /* N, pressure x area of a bend's leg, or the whole thrust */
     double angle;       /* rad */
     double factor;
-    double friction, bearing; /* N/m, as used */
-    double length;            /* m */
+    double demand; /* N, that friction and bearing along the leg must make up */
+    kent_leg_piece piece[KENT_LEG_PIECES];
+    size_t piece_count;
+    double own; /* m of it in the ground of the fitting itself; INFINITY: all of it */
+    const kent_soil *lacking; /* whose values are missing; NULL */
+    double length;            /* m, of all pieces */
 } kent_leg_work;
 
 /* How the legs of a fitting are restrained. */
@@ -75,13 +92,31 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size
                           kent_vec3 thrust, double factor, kent_leg_work *out);
 
 /* Where a leg of this length would end: whether before anything that breaks it. Says
- * what it meets in notes. */
+ * what it meets in notes. own: m of it in the ground of the fitting itself. */
 bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t fitting,
-                   size_t port, double length, kent_notes *notes);
+                   size_t port, double length, double own, kent_notes *notes);
 
-/* The nearest point along the port's pipe, going out of the fitting, whose soil counts:
- * its index and the distance (m). -1: none to the end of the pipe, at that distance. */
-int kent_leg_sound(const kent_model *m, const kent_port *port, double *distance);
+/* Where ground that counts begins along a pipe. */
+typedef struct kent_sound {
+    double distance;       /* m, or to the end of the pipe where there is none */
+    const kent_soil *soil; /* NULL: none to the end of the pipe */
+    int point;             /* where it begins; -1: at the edge of a zone */
+} kent_sound;
+
+/* The nearest, along the port's pipe, going out of the fitting. */
+kent_sound kent_leg_sound(const kent_model *m, const kent_port *port);
+
+/* Fills the pieces of a leg from its demand, first in the ground of the fitting, then
+ * in that of the zones its pipe passes. Returns 0, or what is missing. */
+unsigned kent_leg_pieces(const kent_model *m, const kent_fitting *fitting,
+                         const kent_port *port, kent_leg_work *w);
+
+/* m from the pipe's start; at the port. */
+double kent_port_chainage(const kent_model *m, const kent_port *port);
+
+/* m: the next edge of a zone along a pipe from a chainage, one way; INFINITY (ahead) or
+ * -INFINITY (back): none. */
+double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead);
 
 /* The soil of a point: its own or the ground's; NULL: not stated. */
 const kent_soil *kent_point_soil(const kent_model *m, int point);

@@ -71,20 +71,21 @@ static void refuse_soil(const kent_holding_work *w, kent_text *t)
     kent_text_add(t, "the soil here, '%s', gives no restraint: ", w->soil->id);
     for (size_t k = 0; k < f->port_count; k++) {
         const kent_port *p = &m->ports[f->port_first + k];
-        double distance = NAN;
         if (p->span < 0 || p->toward < 0) continue;
-        const int sound = kent_leg_sound(m, p, &distance);
-        if (distance <= 0.0) continue; /* nothing lies that way */
-        const kent_said far = kent_said_whole(KENT_LENGTH, m->units, distance);
+        const kent_sound sound = kent_leg_sound(m, p);
+        if (sound.distance <= 0.0) continue; /* nothing lies that way */
+        const kent_said far = kent_said_whole(KENT_LENGTH, m->units, sound.distance);
         const char *toward = m->points[p->toward].id;
-        if (sound >= 0) {
-            kent_text_add(t, "%s%s towards %s into the %s at %s", sep, far.s, toward,
-                          kent_point_soil(m, sound)->id, m->points[sound].id);
-        } else {
+        if (!sound.soil) {
             kent_text_add(t,
                           "%smore than the %s of pipe towards %s (no sound ground "
                           "along it)",
                           sep, far.s, toward);
+        } else {
+            kent_text_add(t, "%s%s towards %s into the %s at %s", sep, far.s, toward,
+                          sound.soil->id,
+                          sound.point >= 0 ? m->points[sound.point].id
+                                           : "the edge of its zone");
         }
         sep = " and ";
     }
@@ -184,8 +185,8 @@ static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
         kent_text_add(&t, "%s%s", t.length ? ", " : "", KEYS[i].key);
     }
     if (t.length > 0) {
-        kent_notes_add(notes, "no restrained length: soil '%s' lacks %s", w->soil->id,
-                       kent_text_of(&t));
+        kent_notes_add(notes, "no restrained length: soil '%s' lacks %s",
+                       w->lacking->id, kent_text_of(&t));
     }
     if (w->lack & KENT_LACK_COVER) {
         kent_notes_add(notes, "no restrained length: the cover is not stated");
@@ -208,6 +209,20 @@ static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
     }
     if ((w->lack & KENT_LACK_SOIL) && !w->soil && w->fault == KENT_FAULT_NONE) {
         kent_notes_add(notes, "no restrained length: the soil is not stated");
+    }
+    if ((w->lack & KENT_LACK_SOIL) && kent_soil_counts(w->soil)) {
+        kent_notes_add(notes, "no restrained length: it runs into ground whose soil is "
+                              "not stated");
+    }
+    if (w->lack & KENT_LACK_SOUND) {
+        kent_notes_add(notes, "no restrained length: it runs into ground that gives no "
+                              "restraint, to the end of the pipe");
+    }
+    if (w->lack & KENT_LACK_PIECES) {
+        kent_notes_add(notes,
+                       "no restrained length: the ground changes more than %d times "
+                       "along it, which is not worked out",
+                       KENT_LEG_PIECES - 1);
     }
     notes->failed = notes->failed || t.failed;
     kent_text_clear(&t);
