@@ -283,15 +283,29 @@ static void main_above_its_water(const watch *w)
         kent_said_of(KENT_LENGTH, m->units, lowest).s);
 }
 
+/* m, of still water at a point; NAN: none is known. */
+static double still_level(const kent_model *m, int point)
+{
+    double level = m->loads.static_level;
+    for (size_t i = 0; isnan(m->loads.static_level) && i < m->span_count; i++) {
+        const kent_span *s = &m->spans[i];
+        for (size_t k = 0; k < s->route_count; k++) {
+            if (m->route[s->route_first + k] != point) continue;
+            level = fmax(level, m->highest_level[s->node[k > 0]]);
+        }
+    }
+    return level;
+}
+
 /* Test and still water fall alike with height, so that one place tells for all. */
 static void test_below_still_water(const watch *w)
 {
     const kent_model *m = w->m;
     const kent_loads *l = &m->loads;
     if (l->test_rule != KENT_TEST_FIXED || l->test_gauge < 0) return;
-    const double level = isnan(l->static_level) ? highest_level(m) : l->static_level;
-    const double still = kent_model_pressure(m, level, m->points[l->test_gauge].at.z);
-    if (!(l->test_pressure < still)) return; /* NaN: no test */
+    const double z = m->points[l->test_gauge].at.z;
+    const double still = kent_model_pressure(m, still_level(m, l->test_gauge), z);
+    if (!(l->test_pressure < still)) return; /* NaN: no test, or no still water */
     kent_notes_add(w->cautions,
                    "the site test, %s at %s, is below the pressure of still water "
                    "there, %s: a gauge elsewhere, or a wrong unit?",

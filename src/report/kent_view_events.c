@@ -54,31 +54,65 @@ static void add_opening(double opening, kent_text *out)
     }
 }
 
+/* Opening, or m3/s, at the end of an event. */
+static double end_of(const kent_model *m, const kent_event *e)
+{
+    return e->law_count > 0 ? m->law[e->law_first + e->law_count - 1].value : e->to;
+}
+
+/* The same where the k-th event of a scenario starts: where the last one before it that
+ * moves the same thing ends, else as in steady flow. */
+static double start_of(const kent_model *m, const kent_scenario *s, size_t k)
+{
+    const kent_event *e = &m->events[s->event_first + k];
+    const kent_event *last = NULL;
+    for (size_t i = 0; i < s->event_count; i++) {
+        const kent_event *other = &m->events[s->event_first + i];
+        if (other->kind != e->kind || other->target != e->target) continue;
+        if (other->start_time >= e->start_time) continue;
+        if (!last || other->start_time > last->start_time) last = other;
+    }
+    if (last) return end_of(m, last);
+    return e->kind == KENT_EVENT_VALVE ? m->valves[e->target].opening
+                                       : m->outflows[e->target].flow;
+}
+
+static void add_value(const kent_view *v, kent_event_kind kind, double value,
+                      kent_text *out)
+{
+    kent_shown s;
+    switch (kind) {
+    case KENT_EVENT_VALVE:
+        add_opening(value, out);
+        break;
+    case KENT_EVENT_OUTFLOW:
+        kent_text_add(out, "%s", said(v, KENT_FLOW, value, &s));
+        break;
+    }
+}
+
 /* "valve V1 goes from fully open to closed in 12 s, from 1 s on" */
-static void add_event(const kent_view *v, const kent_event *e, kent_text *out)
+static void add_event(const kent_view *v, const kent_scenario *s, size_t k,
+                      kent_text *out)
 {
     const kent_model *m = v->model;
-    kent_shown s;
+    const kent_event *e = &m->events[s->event_first + k];
     switch (e->kind) {
     case KENT_EVENT_VALVE:
         kent_text_add(out, "valve %s goes from ", m->valves[e->target].id);
-        add_opening(m->valves[e->target].opening, out);
         break;
     case KENT_EVENT_OUTFLOW:
-        kent_text_add(out, "the outflow at %s goes from %s",
-                      kent_view_point(m, m->outflows[e->target].point),
-                      said(v, KENT_FLOW, m->outflows[e->target].flow, &s));
+        kent_text_add(out, "the outflow at %s goes from ",
+                      kent_view_point(m, m->outflows[e->target].point));
         break;
     }
+    add_value(v, e->kind, start_of(m, s, k), out);
+    kent_text_add(out, " to ");
+    add_value(v, e->kind, end_of(m, e), out);
     if (e->law_count > 0) {
         kent_text_add(out, " by a law of %zu points", e->law_count);
-    } else if (e->kind == KENT_EVENT_VALVE) {
-        kent_text_add(out, " to ");
-        add_opening(e->to, out);
-        kent_text_add(out, " in %.4g s", e->ramp_time);
     } else {
-        kent_text_add(out, " to %s in %.4g s", said(v, KENT_FLOW, e->to, &s),
-                      e->ramp_time);
+        kent_text_add(out, " in %.4g s", e->ramp_time);
     }
     kent_text_add(out, ", from %.4g s on", e->start_time);
 }
@@ -110,7 +144,7 @@ void kent_view_scenarios(const kent_view *v)
         add_start(v, s, &words);
         for (size_t k = 0; k < s->event_count; k++) {
             kent_text_add(&words, "; ");
-            add_event(v, &m->events[s->event_first + k], &words);
+            add_event(v, s, k, &words);
         }
         if (s->event_count == 0) kent_text_add(&words, "; nothing moves");
         kent_text_add(&words, ".");

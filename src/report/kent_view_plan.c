@@ -155,14 +155,13 @@ static double rise_of(const kent_model *m, const kent_fitting *f)
  * than a twentieth of a degree is none. */
 static void add_parts(const kent_model *m, const kent_fitting *f, kent_text *out)
 {
-    const double least = 0.05;
     const double turn = f->plan_turn * DEGREES;
     const double rise = f->port_count == 2 ? rise_of(m, f) : 0.0;
     const char *side = turn > 0.0 ? "left" : "right";
-    if (fabs(turn) >= least && fabs(rise) >= least) {
+    if (fabs(turn) >= STANDARD_GAP && fabs(rise) >= STANDARD_GAP) {
         kent_text_add(out, ", %.1f° to the %s in plan and %.1f° %s in profile",
                       fabs(turn), side, fabs(rise), rise > 0.0 ? "up" : "down");
-    } else if (fabs(turn) >= least) {
+    } else if (fabs(turn) >= STANDARD_GAP) {
         kent_text_add(out, " to the %s", side);
     }
 }
@@ -349,17 +348,14 @@ static void add_fitting_and_ground(const plan *p, const kent_fitting *f, kent_te
 
 /* ---- along the pipes ------------------------------------------------------------- */
 
-/* m, as the point is given, else from the start of the pipe. */
-static double station_at(const kent_model *m, size_t stop)
-{
-    const double given = m->points[m->route[stop]].station;
-    return isnan(given) ? m->chainage[stop] : given;
-}
-
 static void add_stop(plan *p, size_t pipe, size_t stop, kent_text *words)
 {
     const kent_model *m = p->view->model;
     const int point = m->route[stop];
+    if (m->station_on[stop] != m->station[stop]) {
+        kent_text_add(words, "counting goes on from %s; ",
+                      kent_shown_station(p->view->units, m->station_on[stop]).text);
+    }
     if (p->pipe[point] >= 0) {
         kent_text_add(words, "told under pipe %s.", m->pipes[p->pipe[point]].id);
         return;
@@ -421,7 +417,7 @@ static void say_pipe(plan *p, size_t pipe)
         kent_view_point(m, m->route[last]));
     kent_view_say(p->view, "", &words);
     for (size_t stop = a->route_first; stop <= last; stop++) {
-        add_lead(p, station_at(m, stop), kent_view_point(m, m->route[stop]),
+        add_lead(p, m->station[stop], kent_view_point(m, m->route[stop]),
                  id_columns(m, a), &lead);
         add_stop(p, pipe, stop, &words);
         kent_view_say(p->view, kent_text_of(&lead), &words);
@@ -542,7 +538,7 @@ void kent_view_points(const kent_view *v)
     const kent_model *m = v->model;
     const kent_shown unit = kent_shown_unit(KENT_LENGTH, v->units);
     const char *metre = unit.text;
-    enum { FIXED = 5 };
+    enum { FIXED = 6 };
     const size_t states = kent_view_states(v);
     const size_t count = FIXED + states;
     kent_shown *names = kent_alloc(states, sizeof *names);
@@ -557,7 +553,8 @@ void kent_view_points(const kent_view *v)
     columns[1] = (kent_column){"x", metre, KENT_ALIGN_RIGHT, false};
     columns[2] = (kent_column){"y", metre, KENT_ALIGN_RIGHT, false};
     columns[3] = (kent_column){"z", metre, KENT_ALIGN_RIGHT, false};
-    columns[4] = (kent_column){"cover", metre, KENT_ALIGN_RIGHT, false};
+    columns[4] = (kent_column){"ground", metre, KENT_ALIGN_RIGHT, false};
+    columns[5] = (kent_column){"cover", metre, KENT_ALIGN_RIGHT, false};
     for (size_t s = 0; s < states; s++) {
         names[s] = kent_view_in_state(v, "steady head", s);
         columns[FIXED + s] =
@@ -577,13 +574,13 @@ void kent_view_points(const kent_view *v)
         kent_view_quantity(v, &t, KENT_LENGTH, p->at.x);
         kent_view_quantity(v, &t, KENT_LENGTH, p->at.y);
         kent_view_quantity(v, &t, KENT_LENGTH, p->at.z);
-        kent_view_quantity(v, &t, KENT_LENGTH,
-                           isnan(p->cover) ? m->ground.cover : p->cover);
+        kent_view_quantity(v, &t, KENT_LENGTH, p->ground_level);
+        kent_view_quantity(v, &t, KENT_LENGTH, p->cover);
         for (size_t s = 0; s < states; s++) {
             kent_view_quantity(v, &t, KENT_LENGTH, head[s * m->point_count + i]);
         }
     }
-    kent_view_finish(v, "Points", &t);
+    kent_view_finish(v, "Points, as given", &t);
 done:
     free(head);
     free(columns);

@@ -274,6 +274,8 @@ static void a_test_below_still_water_is_seen(void **state)
     assert_quiet(&b);
     b.model->loads.test_pressure = 293e3;
     assert_raised(&b, "the site test, 2.93 bar at E, is below the pressure of still");
+    b.model->loads.test_gauge = kent_model_point_index(b.model, "P"); /* in mid-run */
+    assert_raised(&b, "the site test, 2.93 bar at P, is below the pressure of still");
     b.model->loads.static_level = 39.0; /* 284 kPa: stated, it holds */
     assert_quiet(&b);
     kent_build_clear(&b);

@@ -292,6 +292,24 @@ static void events_are_told_from_where_to_where(void **state)
     kent_build_clear(&b);
 }
 
+/* Each of two events on one thing starts where the one before it ended. */
+static void an_event_starts_from_where_the_last_one_ended(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    const int drawn = kent_build_outflow(&b, "E", 0.0);
+    const int fire = kent_build_scenario(&b, "fire", 60.0);
+    kent_build_ramp(&b, fire, KENT_EVENT_OUTFLOW, drawn, 1.0, 5.0, 0.06);
+    const kent_law_point law[] = {{0.0, 0.06}, {2.0, 0.03}};
+    kent_build_law(&b, fire, KENT_EVENT_OUTFLOW, drawn, 20.0, law, 2);
+    kent_build_ramp(&b, fire, KENT_EVENT_OUTFLOW, drawn, 40.0, 2.0, 0.0);
+    kent_build_derive(&b);
+    assert_says(&b, KENT_SI, "E goes from 0.0 L/s to 60.0 L/s in 5 s, from 1 s on; ");
+    assert_says(&b, KENT_SI, "E goes from 60.0 L/s to 30.0 L/s by a law of 2 points, ");
+    assert_says(&b, KENT_SI, "E goes from 30.0 L/s to 0.0 L/s in 2 s, from 40 s on.");
+    kent_build_clear(&b);
+}
+
 static void a_valve_goes_from_its_opening_to_another(void **state)
 {
     (void)state;
@@ -375,11 +393,11 @@ static void a_large_main_is_counted_and_only_what_is_unusual_is_told(void **stat
                                  "dead-end."));
     assert_non_null(strstr(text, " P100  bend 30.0°"));
     assert_null(strstr(text, " P99  "));
-    assert_null(strstr(text, "\nPoints\n"));
+    assert_null(strstr(text, "\nPoints, as given\n"));
     assert_true(out.length < 4000);
     kent_text_clear(&out);
     assert_says(&b, KENT_SI, "  P99 ");
-    assert_says(&b, KENT_SI, "\nPoints\n");
+    assert_says(&b, KENT_SI, "\nPoints, as given\n");
     kent_build_clear(&b);
 }
 
@@ -390,7 +408,7 @@ static void a_main_of_two_hundred_points_is_told_whole(void **state)
     kent_build_derive(&b);
     kent_text out = printed(&b, KENT_SI, false);
     assert_non_null(strstr(kent_text_of(&out), "  P99 "));
-    assert_non_null(strstr(kent_text_of(&out), "\nPoints\n"));
+    assert_non_null(strstr(kent_text_of(&out), "\nPoints, as given\n"));
     kent_text_clear(&out);
     kent_build_clear(&b);
 }
@@ -412,6 +430,7 @@ int main(void)
         cmocka_unit_test(alike_pipes_are_told_as_one),
         cmocka_unit_test(ratings_are_told_with_what_they_are_for),
         cmocka_unit_test(events_are_told_from_where_to_where),
+        cmocka_unit_test(an_event_starts_from_where_the_last_one_ended),
         cmocka_unit_test(a_valve_goes_from_its_opening_to_another),
         cmocka_unit_test(factors_are_told_one_by_one_only_where_they_differ),
         cmocka_unit_test(a_test_is_told_by_its_rule),
