@@ -1,10 +1,8 @@
 /* The reader walked along its own table: what one row allows and refuses, every row
  * does.
  */
-#include "case_text.h"
 #include "kent_record.h"
-
-#include <math.h>
+#include "key_text.h"
 
 /* What is complained of a group that holds just `text`. */
 static void read_group(kent_reader *r, const char *group, const char *text,
@@ -83,15 +81,6 @@ static void reader_end(kent_reader *r)
     kent_units_free(r->units);
 }
 
-/* The next key of this version from *index on; NULL: no more. */
-static const kent_key *next_now(size_t *index)
-{
-    while (*index < KENT_KEY_COUNT && !kent_key_is_now(&KENT_KEYS[*index])) {
-        ++*index;
-    }
-    return *index < KENT_KEY_COUNT ? &KENT_KEYS[(*index)++] : NULL;
-}
-
 /* Pressures, stresses and moduli are all Pa: a length is the wrong kind for them, as it
  * is for all that is no length itself. */
 static void every_quantity_refuses_a_unit_of_another_kind(void **state)
@@ -125,18 +114,6 @@ static void every_quantity_refuses_a_number_without_unit(void **state)
     reader_end(&r);
 }
 
-/* The text of an SI value; unit "" for numbers. */
-static void value_text(const kent_key *k, double value, char *out, size_t size)
-{
-    if (k->value == KENT_VALUE_QUANTITY) {
-        (void)snprintf(out, size, "\"%.17g %s\"", value, kent_kind_si(k->kind));
-    } else if (k->value == KENT_VALUE_COUNT) {
-        (void)snprintf(out, size, "%.0f", value);
-    } else {
-        (void)snprintf(out, size, "%.15f", value);
-    }
-}
-
 static void limits_are_accepted_and_what_is_beyond_is_refused(void **state)
 {
     (void)state;
@@ -164,32 +141,6 @@ static void limits_are_accepted_and_what_is_beyond_is_refused(void **state)
     }
     assert_true(limits > 300);
     reader_end(&r);
-}
-
-/* A value of a type that the row does not take. */
-static const char *wrong_type_for(const kent_key *k)
-{
-    switch (k->value) {
-    case KENT_VALUE_QUANTITY:
-    case KENT_VALUE_EITHER:
-    case KENT_VALUE_NUMBER:
-    case KENT_VALUE_COUNT:
-    case KENT_VALUE_TEXT:
-    case KENT_VALUE_ID:
-    case KENT_VALUE_REF:
-    case KENT_VALUE_WORD:
-    case KENT_VALUE_STATION:
-    case KENT_VALUE_TURN:
-        return "{ }";
-    case KENT_VALUE_SWITCH:
-        return "\"true\"";
-    case KENT_VALUE_LIST:
-    case KENT_VALUE_GROUP:
-        return "\"text\"";
-    case KENT_VALUE_VECTOR:
-        return "[ 1.0, 0.0 ]";
-    }
-    return "";
 }
 
 static void every_key_refuses_a_value_of_another_type(void **state)
