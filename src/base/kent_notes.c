@@ -7,18 +7,49 @@
 #include <stdlib.h>
 #include <string.h>
 
-static bool stands_already(const kent_notes *n, const char *text)
+/* FNV-1a. */
+static size_t hash(const char *text)
 {
-    for (size_t i = 0; i < n->count; i++) {
-        if (strcmp(n->text[i], text) == 0) return true;
+    unsigned long long sum = 14695981039346656037ULL;
+    for (const char *p = text; *p; p++) {
+        sum = (sum ^ (unsigned char)*p) * 1099511628211ULL;
     }
-    return false;
+    return (size_t)sum;
+}
+
+/* The slot that holds the text, or the free one where it belongs. */
+static size_t *slot_of(const kent_notes *n, const char *text)
+{
+    size_t at = hash(text) % n->slot_count;
+    while (n->slots[at] != 0 && strcmp(n->text[n->slots[at] - 1], text) != 0) {
+        at = (at + 1) % n->slot_count;
+    }
+    return &n->slots[at];
+}
+
+/* Keeps at least half of the slots free, so that looking for one is short. */
+static int make_room(kent_notes *n)
+{
+    void *array = n->text;
+    if (2 * (n->count + 1) > n->slot_count) {
+        const size_t more = n->slot_count ? 2 * n->slot_count : 64;
+        size_t *slots = kent_alloc(more, sizeof *slots);
+        if (!slots) return -1;
+        free(n->slots);
+        n->slots = slots;
+        n->slot_count = more;
+        for (size_t i = 0; i < n->count; i++) {
+            *slot_of(n, n->text[i]) = i + 1;
+        }
+    }
+    if (kent_grow(&array, &n->capacity, n->count + 1, sizeof *n->text) != 0) return -1;
+    n->text = array;
+    return 0;
 }
 
 void kent_notes_add(kent_notes *n, const char *fmt, ...)
 {
     char *text = NULL;
-    void *array = n->text;
     va_list measure, args;
 
     va_start(args, fmt);
@@ -30,10 +61,11 @@ void kent_notes_add(kent_notes *n, const char *fmt, ...)
     if (!text) goto lost;
     (void)vsnprintf(text, (size_t)length + 1, fmt, args);
 
-    if (stands_already(n, text)) goto done;
-    if (kent_grow(&array, &n->capacity, n->count + 1, sizeof *n->text) != 0) goto lost;
-    n->text = array;
+    if (make_room(n) != 0) goto lost;
+    size_t *slot = slot_of(n, text);
+    if (*slot != 0) goto done; /* it stands there already */
     n->text[n->count++] = text;
+    *slot = n->count;
     text = NULL; /* handed over */
     goto done;
 lost:
@@ -49,5 +81,6 @@ void kent_notes_clear(kent_notes *n)
         free(n->text[i]);
     }
     free(n->text);
+    free(n->slots);
     *n = (kent_notes){0};
 }

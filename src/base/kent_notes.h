@@ -9,6 +9,8 @@
 typedef struct kent_notes {
     char **text; /* [count] */
     size_t count, capacity;
+    size_t *slots; /* [slot_count] index + 1 by hash of the text; 0: free */
+    size_t slot_count;
     bool failed; /* a note was lost for want of memory */
 } kent_notes;
 

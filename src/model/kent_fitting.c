@@ -420,6 +420,8 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                           .zone = zone_of(m, l, point),
                           .role = note ? note->role : KENT_ROLE_NONE,
                           .branch = site.branch,
+                          .obstacle_first = note ? note->obstacle_first : 0,
+                          .obstacle_count = note ? note->obstacle_count : 0,
                           .port_count = site.count,
                           .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
@@ -521,6 +523,8 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
                           .curve_length = nan,
                           .zone = -1,
                           .role = note->role,
+                          .obstacle_first = note->obstacle_first,
+                          .obstacle_count = note->obstacle_count,
                           .port_count = note->port_count,
                           .place = note->place};
     (void)snprintf(out->id, sizeof out->id, "%s", note->id);

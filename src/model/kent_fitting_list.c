@@ -1,12 +1,9 @@
 #include "kent_model_internal.h"
 
-#include <stdlib.h>
-
-/* The note on each point, [point_count] indices, -1: none; complains of notes that
- * belong nowhere. */
-static void sort_notes(const kent_model *m, const kent_layout *l, int *note_of,
-                       kent_complaints *complaints)
+/* The note on each point; complains of notes that belong nowhere. */
+static void sort_notes(const kent_model *m, kent_layout *l, kent_complaints *complaints)
 {
+    int *note_of = l->note;
     for (size_t p = 0; p < m->point_count; p++) {
         note_of[p] = -1;
     }
@@ -57,21 +54,18 @@ static void keep_last(kent_model *m)
     m->port_count += f->port_count;
 }
 
-kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
+kent_status kent_fitting_list(kent_model *m, kent_layout *l,
                               kent_complaints *complaints)
 {
-    kent_status status = KENT_E_NOMEM;
     size_t fittings = 0, ports = 0; /* capacities */
-    int *note_of = kent_alloc(m->point_count, sizeof *note_of);
 
-    if (!note_of) goto done;
-    sort_notes(m, l, note_of, complaints);
+    sort_notes(m, l, complaints);
     for (size_t stop = 0; stop < m->route_count; stop++) {
         const int point = m->route[stop];
         if (l->stop[l->first[point]] != stop) continue; /* seen already */
-        if (make_room(m, &fittings, &ports) != KENT_OK) goto done;
+        if (make_room(m, &fittings, &ports) != KENT_OK) return KENT_E_NOMEM;
         const kent_fitting_note *note =
-            note_of[point] >= 0 ? &m->notes[note_of[point]] : NULL;
+            l->note[point] >= 0 ? &m->notes[l->note[point]] : NULL;
         if (kent_fitting_at(m, l, point, note, &m->fittings[m->fitting_count],
                             &m->ports[m->port_count], complaints)) {
             keep_last(m);
@@ -79,14 +73,11 @@ kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
     }
     for (size_t i = 0; i < m->note_count; i++) {
         if (m->notes[i].port_count == 0) continue;
-        if (make_room(m, &fittings, &ports) != KENT_OK) goto done;
+        if (make_room(m, &fittings, &ports) != KENT_OK) return KENT_E_NOMEM;
         if (kent_fitting_from_ports(m, &m->notes[i], &m->fittings[m->fitting_count],
                                     &m->ports[m->port_count], complaints)) {
             keep_last(m);
         }
     }
-    status = KENT_OK;
-done:
-    free(note_of);
-    return status;
+    return KENT_OK;
 }

@@ -63,12 +63,13 @@ kent_status kent_layout_make(const kent_model *m, kent_layout *l)
     l->stop = kent_alloc(m->route_count, sizeof *l->stop);
     l->pipe = kent_alloc(m->route_count, sizeof *l->pipe);
     l->owner = kent_alloc(m->point_count, sizeof *l->owner);
+    l->note = kent_alloc(m->point_count, sizeof *l->note);
     l->device = kent_alloc(m->point_count, sizeof *l->device);
     l->station = kent_alloc(m->point_count, sizeof *l->station);
     l->arm_node = kent_alloc(m->route_count, 2 * sizeof *l->arm_node);
     l->arm_span = kent_alloc(m->route_count, 2 * sizeof *l->arm_span);
-    if (!l->first || !l->stop || !l->pipe || !l->owner || !l->device || !l->station ||
-        !l->arm_node || !l->arm_span) {
+    if (!l->first || !l->stop || !l->pipe || !l->owner || !l->note || !l->device ||
+        !l->station || !l->arm_node || !l->arm_span) {
         return KENT_E_NOMEM; /* the caller clears */
     }
     for (size_t a = 0; a < 2 * m->route_count; a++) {
@@ -85,6 +86,7 @@ void kent_layout_clear(kent_layout *l)
     free(l->stop);
     free(l->pipe);
     free(l->owner);
+    free(l->note);
     free(l->device);
     free(l->station);
     free(l->arm_node);

@@ -120,15 +120,22 @@ void kent_place_complain(const kent_model *m, kent_place place,
                   known ? place.line : 0, "%s", what);
 }
 
-/* Points that no pipe runs through: allowed, since a survey lists more than is built.
- */
+/* Points that no pipe runs through: allowed, since a survey lists more than is built;
+ * the first few by name. */
 static void caution_unused_points(kent_model *m, const kent_layout *l)
 {
+    enum { NAMED = 10 };
+    size_t unused = 0;
     if (m->pipe_count == 0) return;
     for (size_t p = 0; p < m->point_count; p++) {
         if (l->first[p + 1] > l->first[p]) continue;
+        if (unused++ >= NAMED) continue;
         kent_notes_add(&m->cautions, "point \"%s\" is on no pipe's route",
                        m->points[p].id);
+    }
+    if (unused > NAMED) {
+        kent_notes_add(&m->cautions, "%zu more points are on no pipe's route",
+                       unused - NAMED);
     }
 }
 
@@ -155,6 +162,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     status = kent_network_check_connected(m, complaints);
     if (status != KENT_OK) goto done;
     status = kent_fitting_list(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
+    status = kent_group_fittings(m, &layout, complaints);
     if (status != KENT_OK) goto done;
     status = kent_state_marches(m, complaints);
     if (status == KENT_OK) status = kent_state_levels(m);
@@ -207,6 +216,21 @@ int kent_model_point_index(const kent_model *m, const char *id)
 int kent_model_pipe_index(const kent_model *m, const char *id)
 {
     return index_of(m->pipes, m->pipe_count, sizeof *m->pipes, id);
+}
+
+int kent_model_fitting_of(const kent_model *m, const char *id)
+{
+    for (size_t f = 0; f < m->fitting_count; f++) {
+        if (strcmp(m->fittings[f].id, id) == 0) return (int)f;
+    }
+    for (size_t f = 0; f < m->fitting_count; f++) {
+        const kent_fitting *fitting = &m->fittings[f];
+        for (size_t k = 0; k < fitting->member_count; k++) {
+            const int point = m->members[fitting->member_first + k];
+            if (strcmp(m->points[point].id, id) == 0) return (int)f;
+        }
+    }
+    return -1;
 }
 
 int kent_model_valve_index(const kent_model *m, const char *id)

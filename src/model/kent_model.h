@@ -463,7 +463,8 @@ typedef struct kent_fitting {
                             valve on a joint that holds has no port. end NONE: none */
     double curve_radius; /* m, of a curve; NAN */
     double curve_length; /* m along a curve; NAN */
-    size_t member_first, member_count;     /* of a group, into kent_model.members */
+    size_t member_first, member_count; /* of a group, or of a curve of several joints,
+                                          into kent_model.members */
     size_t obstacle_first, obstacle_count; /* into kent_model.obstacles */
     int zone;   /* of kent_model.ground_zones, that it lies in; -1 */
     int trench; /* -1: not stated */
@@ -475,7 +476,8 @@ typedef struct kent_fitting {
     int valve;                 /* KENT_VALVE: which; else -1 */
     size_t port_first,
         port_count; /* into kent_model.ports. Bend and reducer: [0] upstream
-                       by route; tee, wye: [0], [1] the run, [2] the branch */
+                       by route; tee, wye: [0], [1] the run, [2] the branch. Group:
+                       the legs that lead out of it, member by member */
     kent_place place;
 } kent_fitting;
 
@@ -657,6 +659,8 @@ void kent_model_place_text(const kent_model *m, kent_place place, char *out,
 int kent_model_point_index(const kent_model *m, const char *id);
 int kent_model_pipe_index(const kent_model *m, const char *id);
 int kent_model_valve_index(const kent_model *m, const char *id);
+/* By its own id, else by that of one of its members. */
+int kent_model_fitting_of(const kent_model *m, const char *id);
 
 /* Words as in the case file and in results: "bend", "dead-end", "push-on" ... */
 const char *kent_fitting_type_word(kent_fitting_type type);

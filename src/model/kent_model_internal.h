@@ -36,6 +36,7 @@ typedef struct kent_layout {
     size_t *owner;       /* [point_count] the stop whose stations a point's are: the
                             first that a route runs through, else the first; any number
                             where there is none */
+    int *note;           /* [point_count] what the case says of its fitting; -1 */
     kent_device *device; /* [point_count] */
     double *station;     /* [point_count] m; NAN: on no route */
     int *arm_node;       /* [2 route_count] -1: the pipe isn't cut there */
@@ -94,6 +95,8 @@ void kent_span_fill(const kent_model *m, kent_span *span);
 double kent_ports_turn(const kent_port ports[2]);      /* rad, 0: straight on */
 double kent_ports_plan_turn(const kent_port ports[2]); /* rad, + to the left */
 kent_orientation kent_ports_orientation(const kent_port ports[2]);
+/* By the way equal pressures on all seals push. */
+kent_orientation kent_ports_push(const kent_port *ports, size_t count);
 double kent_ports_branch_angle(const kent_port ports[3]); /* rad, to the nearer run */
 /* Brings the two most nearly opposite legs to the front, keeping the order otherwise.
  */
@@ -128,9 +131,15 @@ bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,
 /* Its port. False: as built it has none, since its end is one body with the fitting. */
 bool kent_branch_port(const kent_branch *branch, kent_port *out);
 
-/* kent_fitting_list.c: all of them, in the order of kent_model.fittings. */
-kent_status kent_fitting_list(kent_model *m, const kent_layout *l,
+/* kent_fitting_list.c: all of them, in the order of kent_model.fittings; notes go to
+ * their points. */
+kent_status kent_fitting_list(kent_model *m, kent_layout *l,
                               kent_complaints *complaints);
+
+/* kent_group.c: fittings held as one, because the case says so or because they stand
+ * close together on joints that hold. */
+kent_status kent_group_fittings(kent_model *m, const kent_layout *l,
+                                kent_complaints *complaints);
 
 /* A complaint about what stands at place. */
 __attribute__((format(printf, 4, 5))) void

@@ -27,7 +27,9 @@ static bool pipes_are_valid(const kent_model *m)
         if (p->route_count < 2 ||
             !is_part(p->route_first, p->route_count, m->route_count) ||
             !is_positive(p->inside_diameter) || !(p->loss >= 0.0) ||
-            !(p->joint_deflection >= 0.0) || !(p->friction_coefficient >= 0.0)) {
+            !(p->joint_deflection >= 0.0) || !(p->friction_coefficient >= 0.0) ||
+            !is_positive(p->derating) ||
+            !is_part(p->creep_first, p->creep_count, m->creep_count)) {
             return false;
         }
     }
@@ -71,12 +73,71 @@ static bool devices_are_valid(const kent_model *m)
     return true;
 }
 
+static bool are_indices(const int *list, size_t count, size_t whole)
+{
+    for (size_t i = 0; i < count; i++) {
+        if (!is_index(list[i], whole)) return false;
+    }
+    return true;
+}
+
+static bool is_trench_or_none(int trench)
+{
+    return is_index_or_none(trench, KENT_TRENCHES);
+}
+
+static bool ground_is_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->ground_zone_count; i++) {
+        const kent_ground_zone *z = &m->ground_zones[i];
+        if (!is_index(z->pipe, m->pipe_count) || !(z->from < z->to) ||
+            !is_index_or_none(z->soil, m->soil_count) ||
+            !is_trench_or_none(z->trench)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->soil_count; i++) {
+        const kent_soil *s = &m->soils[i];
+        if (s->by_depth_count > KENT_DEPTH_ROWS || !(s->factor_inside >= 1.0)) {
+            return false;
+        }
+    }
+    return is_index_or_none(m->ground.soil, m->soil_count) &&
+           is_trench_or_none(m->ground.trench) &&
+           are_indices(m->zone_order, m->ground_zone_count, m->ground_zone_count);
+}
+
+static bool states_are_valid(const kent_model *m)
+{
+    for (size_t i = 0; i < m->state_count; i++) {
+        const kent_state *s = &m->states[i];
+        if (!is_part(s->level_first, s->level_count, m->state_level_count) ||
+            !(s->outflow_factor >= 0.0) || !is_positive(s->roughness_factor)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->state_level_count; i++) {
+        const kent_state_level *l = &m->state_levels[i];
+        if (!is_index(l->fixed_level, m->fixed_level_count) || !isfinite(l->level)) {
+            return false;
+        }
+    }
+    for (size_t i = 0; i < m->march_count; i++) {
+        if (!is_index(m->marches[i].scenario, m->scenario_count) ||
+            !is_index(m->marches[i].state, m->state_count)) {
+            return false;
+        }
+    }
+    return are_indices(m->scenario_states, m->scenario_state_count, m->state_count);
+}
+
 static bool scenarios_are_valid(const kent_model *m)
 {
     for (size_t i = 0; i < m->scenario_count; i++) {
         const kent_scenario *s = &m->scenarios[i];
         if (!is_positive(s->duration) ||
-            !is_part(s->event_first, s->event_count, m->event_count)) {
+            !is_part(s->event_first, s->event_count, m->event_count) ||
+            !is_part(s->state_first, s->state_count, m->scenario_state_count)) {
             return false;
         }
     }
@@ -148,7 +209,9 @@ static bool port_is_valid(const kent_model *m, const kent_port *p)
         !(p->face >= 0.0)) {
         return false;
     }
-    if (p->span == -1) return isfinite(p->pressure + p->flow);
+    if (p->kind != KENT_PORT_SPAN) {
+        return p->span == -1 && isfinite(p->pressure + p->flow);
+    }
     if (!is_index(p->span, m->span_count)) return false;
     const kent_span *span = &m->spans[p->span];
     return p->chainage >= 0.0 && p->chainage <= span->length &&
@@ -163,6 +226,11 @@ static bool fittings_are_valid(const kent_model *m)
             !is_index_or_none(f->soil, m->soil_count) ||
             !is_index_or_none(f->valve, m->valve_count) || f->port_count == 0 ||
             !is_part(f->port_first, f->port_count, m->port_count) ||
+            !is_part(f->member_first, f->member_count, m->member_count) ||
+            !is_part(f->obstacle_first, f->obstacle_count, m->obstacle_count) ||
+            !is_index_or_none(f->zone, m->ground_zone_count) ||
+            !is_trench_or_none(f->trench) ||
+            (f->type == KENT_GROUP) > (f->member_count >= 2) ||
             !isfinite(f->angle + f->weight)) {
             return false;
         }
@@ -178,8 +246,11 @@ bool kent_model_is_valid(const kent_model *m)
     return is_positive(m->water.density) && is_positive(m->water.bulk_modulus) &&
            is_positive(m->water.viscosity) && is_positive(m->gravity) &&
            is_positive(m->barometric) &&
-           is_index_or_none(m->ground.soil, m->soil_count) &&
            is_index_or_none(m->loads.test_gauge, m->point_count) &&
-           pipes_are_valid(m) && devices_are_valid(m) && scenarios_are_valid(m) &&
-           spans_are_valid(m) && nodes_are_valid(m) && fittings_are_valid(m);
+           is_index_or_none(m->loads.future_gauge, m->point_count) &&
+           are_indices(m->members, m->member_count, m->point_count) &&
+           are_indices(m->together, m->together_count, m->point_count) &&
+           ground_is_valid(m) && states_are_valid(m) && pipes_are_valid(m) &&
+           devices_are_valid(m) && scenarios_are_valid(m) && spans_are_valid(m) &&
+           nodes_are_valid(m) && fittings_are_valid(m);
 }

@@ -39,6 +39,19 @@ kent_orientation kent_ports_orientation(const kent_port ports[2])
     return push.z > 0.0 ? KENT_CREST : KENT_SAG;
 }
 
+kent_orientation kent_ports_push(const kent_port *ports, size_t count)
+{
+    kent_vec3 push = {0.0, 0.0, 0.0};
+    for (size_t i = 0; i < count; i++) {
+        const double seal = ports[i].seal_diameter * ports[i].seal_diameter;
+        push = kent_vec3_sub(push, kent_vec3_scale(seal, ports[i].direction));
+    }
+    const double all = kent_vec3_length(push);
+    if (fabs(push.z) <= LEVEL_SHARE * all) return KENT_HORIZONTAL;
+    if (plan_length(push) > LEVEL_SHARE * all) return KENT_COMBINED;
+    return push.z > 0.0 ? KENT_CREST : KENT_SAG;
+}
+
 double kent_ports_branch_angle(const kent_port ports[3])
 {
     return fmin(kent_vec3_angle(ports[2].direction, ports[0].direction),

@@ -10,6 +10,7 @@
 static kent_status one_state(kent_model *m)
 {
     if (m->state_count > 0) return KENT_OK;
+    free(m->states); /* of an empty list */
     m->states = kent_alloc(1, sizeof *m->states);
     if (!m->states) return KENT_E_NOMEM;
     m->states[0] =

@@ -2,6 +2,8 @@
 #include "kent_alloc_fail.h"
 #include "kent_check.h"
 
+#include <stdio.h>
+
 static void a_sentence_is_kept_once(void **state)
 {
     (void)state;
@@ -16,6 +18,24 @@ static void a_sentence_is_kept_once(void **state)
     kent_notes_clear(&n);
     kent_notes_clear(&n);
     assert_int_equal(n.count, 0);
+}
+
+static void thousands_of_sentences_keep_their_order(void **state)
+{
+    (void)state;
+    kent_notes n = {0};
+    for (int round = 0; round < 2; round++) {
+        for (int i = 0; i < 5000; i++) {
+            kent_notes_add(&n, "thing %d", i);
+        }
+    }
+    assert_int_equal(n.count, 5000);
+    for (int i = 0; i < 5000; i++) {
+        char text[32];
+        (void)snprintf(text, sizeof text, "thing %d", i);
+        assert_string_equal(n.text[i], text);
+    }
+    kent_notes_clear(&n);
 }
 
 static int note_twenty_things(void *context)
@@ -41,6 +61,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_sentence_is_kept_once),
+        cmocka_unit_test(thousands_of_sentences_keep_their_order),
         cmocka_unit_test(a_lost_note_is_remembered),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

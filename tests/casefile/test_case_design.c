@@ -118,6 +118,22 @@ static void a_bearing_that_cannot_be_known_is_refused(void **state)
          "soil \"bank\": passive_share needs friction_angle or cohesion, from which "
          "the "
          "passive earth pressure follows"},
+        {"allowable_bearing = \"90 kPa\"; bearing_gradient = \"31 kPa/m\";",
+         "soil \"bank\": allowable_bearing and bearing_gradient are both given; keep "
+         "one"},
+        {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ) );",
+         "soil \"bank\": bearing_by_depth needs at least two pairs (depth, bearing); a "
+         "bearing for every depth is allowable_bearing"},
+        {"bearing_by_depth = ( ( \"2 m\", \"80 kPa\" ), ( \"1 m\", \"90 kPa\" ) );",
+         "soil \"bank\": pair 2 of bearing_by_depth: depths must rise from above 0 m, "
+         "bearings not be negative"},
+        {"bearing_by_depth = ( ( \"2 m\", \"80 kPa\" ), \"1 m\" );",
+         "soil \"bank\": element 2 of bearing_by_depth must be a pair, as ( \"1.4 m\", "
+         "\"150 kPa\" )"},
+        {"allowable_bearing = \"90 kPa\"; passive_ratios = ( ( \"type-6\", 0.4 ) );",
+         "soil \"bank\": element 1 of passive_ratios must be a pair of a trench, "
+         "type-1 to "
+         "type-5, and a ratio from 0.0 to 1.0, as ( \"type-3\", 0.4 )"},
     };
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
@@ -268,10 +284,12 @@ static void points_may_be_held_together(void **state)
     (void)state;
     kent_catalogue *c = read_catalogue();
     char *text = replaced(DESIGN_CASE, "at = \"B1\";",
-                          "at = \"B1\"; together_with = [ \"E1\" ];");
+                          "at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; "
+                          "outside_diameter = \"118 mm\"; end = \"blank\"; }; }, "
+                          "{ at = \"B1\"; together_with = [ \"T1\" ];");
     kent_model *m = read_sound(c, text);
-    assert_int_equal(m->notes[0].together_count, 1);
-    assert_int_equal(m->together[m->notes[0].together_first], 3);
+    assert_int_equal(m->notes[1].together_count, 1);
+    assert_int_equal(m->together[m->notes[1].together_first], 1);
     kent_model_free(m);
     free(text);
     kent_catalogue_free(c);

@@ -50,7 +50,9 @@ static void each_refused_allocation_of_a_case_is_out_of_memory(void **state)
         replaced(MAIN_CASE, "surge_rating",
                  "creep = ( ( \"0.05 s\", \"1.06e-10 1/Pa\" ) ); surge_rating");
     char *together = replaced(DESIGN_CASE, "at = \"B1\";",
-                              "at = \"B1\"; together_with = [ \"E1\" ];");
+                              "at = \"T1\"; branch = { direction = [ 0.0, 1.0, 0.0 ]; "
+                              "outside_diameter = \"118 mm\"; end = \"blank\"; }; }, "
+                              "{ at = \"B1\"; together_with = [ \"T1\" ];");
     for (size_t i = 0; i < c->material_count; i++) {
         c->materials[i].plastic = true; /* may creep */
     }

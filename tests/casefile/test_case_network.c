@@ -290,6 +290,18 @@ static const struct {
      "scenario \"a\": states names \"low\" twice; keep one"},
     {"[ \"low\" ]", "[ ]", 20,
      "scenario \"a\": states is empty; leave it out to start from every state"},
+    {"surge_rating",
+     "creep = ( ( \"5 s\", \"1e-10 1/Pa\" ), ( \"1 s\", \"1e-10 1/Pa\" ) ); "
+     "surge_rating",
+     11,
+     "pipe \"A\": pair 2 of creep: times must rise from above 0 s, compliances be "
+     "above 0"},
+    {"surge_rating", "creep = ( ( \"5 s\", 1e-10 ) ); surge_rating", 11,
+     "pipe \"A\": creep = 1e-10 has no unit; write for instance \"1.06e-10 1/Pa\" or "
+     "\"7.3e-7 1/psi\""},
+    {"to = \"0 L/s\"", "to = 0.0", 21,
+     "scenario \"a\": event 1: to = 0 has no unit; an outflow changes to a flow, for "
+     "instance \"300 L/s\" or \"4800 gpm\""},
     {"at = \"R\"; level = \"80 m\"; }",
      "at = \"R\"; level = \"80 m\"; },\n { at = \"R\"; level = \"81 m\"; }", 15,
      "fixed level at \"R\" is given twice, first at line 14"},
@@ -321,6 +333,20 @@ static void a_pipe_between_coordinates_has_no_turn_of_its_own(void **state)
     kent_catalogue_free(c);
 }
 
+static void rules_that_the_catalogue_lacks_are_refused(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < c->rule_count; i++) {
+        c->rules[i].id[0] = 'X';
+    }
+    assert_refused_at(
+        c, SOUND_CASE, 1,
+        "the catalogue has no set of rules \"common-practice\"; name one in "
+        "design_rules");
+    kent_catalogue_free(c);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -334,6 +360,7 @@ int main(void)
         cmocka_unit_test(states_hold_their_levels_and_factors),
         cmocka_unit_test(a_scenario_starts_from_the_states_it_names),
         cmocka_unit_test(each_fault_gets_its_one_complaint),
+        cmocka_unit_test(rules_that_the_catalogue_lacks_are_refused),
         cmocka_unit_test(a_pipe_between_coordinates_has_no_turn_of_its_own),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

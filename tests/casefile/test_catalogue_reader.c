@@ -203,6 +203,111 @@ static void creep_and_derating_that_make_no_sense_are_refused(void **state)
     }
 }
 
+/* ---- pipes ----------------------------------------------------------------------- */
+
+#define STANDARD                                                                       \
+    "format = 1;\nstandards = ( { id = \"S\"; standard = \"a standard\"; material = "  \
+    "\"steel\"; unit = \"mm\"; before_size = \"DN\"; " PROVENANCE "\n"
+
+static const kent_pipe_class *first_pipe(const char *text, kent_catalogue **catalogue)
+{
+    kent_complaints c;
+    const kent_status status = read_config("pipes.cfg", text, catalogue, &c);
+    if (c.count > 0) print_error("%s\n", c.kept[0].what);
+    assert_int_equal(status, KENT_OK);
+    return (*catalogue)->pipes;
+}
+
+static void a_table_may_give_ratios_or_one_wall_in_place_of_walls(void **state)
+{
+    (void)state;
+    kent_catalogue *catalogue = NULL;
+    const kent_pipe_class *p = first_pipe(
+        STANDARD
+        "walls = \"minimum\"; tolerance_per_wall = 0.1; tolerance = \"1 mm\";\n"
+        "surge_factor = 1.5; surge_addition = \"2 bar\"; test_addition = \"3 "
+        "bar\";\n"
+        "classes = ( { id = \"R\"; diameter_ratio = 10.0; pressure_rating = "
+        "\"8 bar\"; least_size = 100.0; }, { id = \"W\"; wall = \"5 mm\"; "
+        "most_size = 100.0; }, { id = \"T\"; } );\n"
+        "rows = ( ( 80.0, 90.0, 0.0, 4.0 ), ( 100.0, 110.0, 1.0, 0.0 ), "
+        "( 150.0, 160.0, 0.0, 6.0 ) ); } );\n",
+        &catalogue);
+    static const struct {
+        const char *id;
+        double least, mean; /* mm */
+    } ROWS[] = {{"S-W-DN80", 5.0, 6.5},    {"S-T-DN80", 4.0, 5.4},
+                {"S-R-DN100", 11.0, 13.1}, {"S-W-DN100", 5.0, 6.5},
+                {"S-R-DN150", 16.0, 18.6}, {"S-T-DN150", 6.0, 7.6}};
+    assert_int_equal(catalogue->pipe_count, 6);
+    for (size_t i = 0; i < 6; i++) {
+        assert_string_equal(p[i].id, ROWS[i].id);
+        assert_close(p[i].wall_minimum, 1e-3 * ROWS[i].least, 1e-12);
+        assert_close(p[i].wall, 1e-3 * ROWS[i].mean, 1e-12);
+    }
+    assert_close(p[2].surge_rating, 14e5, 1e-12);
+    assert_close(p[2].test_rating, 17e5, 1e-12);
+    assert_true(isnan(p[0].surge_rating)); /* no rating in service */
+    kent_catalogue_free(catalogue);
+}
+
+static void tolerances_may_go_by_the_size(void **state)
+{
+    (void)state;
+    kent_catalogue *catalogue = NULL;
+    const kent_pipe_class *p = first_pipe(
+        STANDARD
+        "walls = \"nominal\"; tolerances = ( ( 100.0, 0.5 ), ( 200.0, 0.7 ) );\n"
+        "classes = ( { id = \"T\"; } );\n"
+        "rows = ( ( 80.0, 90.0, 0.0, 4.0 ), ( 200.0, 210.0, 0.0, 4.0 ), "
+        "( 250.0, 260.0, 0.0, 4.0 ) ); } );\n",
+        &catalogue);
+    assert_close(p[0].wall_minimum, 3.5e-3, 1e-12);
+    assert_close(p[1].wall_minimum, 3.3e-3, 1e-12);
+    assert_true(isnan(p[2].wall_minimum)); /* larger than any that is given */
+    assert_close(p[2].wall, 4e-3, 1e-12);
+    kent_catalogue_free(catalogue);
+}
+
+static void tables_of_pipes_that_make_no_sense_are_refused(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *values, *words;
+    } ROWS[] = {
+        {"classes = ( { id = \"R\"; diameter_ratio = 10.0; wall = \"5 mm\"; } ); rows "
+         "= "
+         "( ( 80.0, 90.0, 0.0 ) );",
+         "diameter_ratio and wall are both given; keep one"},
+        {"classes = ( { id = \"R\"; diameter_ratio = 10.0; } ); rows = ( ( 80.0, 90.0, "
+         "0.0, 4.0 ) );",
+         "row 1 must hold 3 numbers"},
+        {"classes = ( { id = \"T\"; } ); rows = ( ( 80.0, 90.0, 0.0 ) );",
+         "row 1 must hold 4 numbers"},
+        {"classes = ( { id = \"T\"; } ); rows = ( ( 80.0, 0.0, 0.0, 4.0 ) );",
+         "row 1: number 2 is not positive"},
+        {"tolerances = ( ( 200.0, 0.5 ), ( 100.0, 0.7 ) ); classes = ( { id = \"T\"; } "
+         ");"
+         " rows = ( ( 80.0, 90.0, 0.0, 4.0 ) );",
+         "pair 2 of tolerances: sizes must rise"},
+        {"classes = ( { id = \"T\"; }, { id = \"T\"; } ); rows = ( ( 80.0, 90.0, 0.0, "
+         "4.0, 5.0 ) );",
+         "is given twice"},
+    };
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char text[700];
+        kent_catalogue *catalogue = NULL;
+        kent_complaints c;
+        (void)snprintf(text, sizeof text, STANDARD "walls = \"nominal\"; %s } );\n",
+                       ROWS[i].values);
+        assert_int_equal(read_config("pipes.cfg", text, &catalogue, &c), KENT_E_INPUT);
+        if (!strstr(c.kept[0].what, ROWS[i].words)) {
+            print_error("%s\n", c.kept[0].what);
+        }
+        assert_non_null(strstr(c.kept[0].what, ROWS[i].words));
+    }
+}
+
 /* ---- rules ----------------------------------------------------------------------- */
 
 #define RULES                                                                          \
@@ -237,6 +342,9 @@ int main(void)
         cmocka_unit_test(ratings_of_a_plastic_fall_with_its_temperature),
         cmocka_unit_test(a_material_without_rows_keeps_its_ratings),
         cmocka_unit_test(creep_and_derating_that_make_no_sense_are_refused),
+        cmocka_unit_test(a_table_may_give_ratios_or_one_wall_in_place_of_walls),
+        cmocka_unit_test(tolerances_may_go_by_the_size),
+        cmocka_unit_test(tables_of_pipes_that_make_no_sense_are_refused),
         cmocka_unit_test(rules_may_have_a_factor_of_their_own_under_test),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -411,6 +411,31 @@ static void bytes_that_are_no_text_are_refused(void **state)
     kent_catalogue_free(c);
 }
 
+static void many_points_off_the_main_are_counted_not_listed(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_text points = {0};
+    kent_text_add(&points, "%s", POINTS_TABLE);
+    for (int i = 0; i < 30; i++) {
+        kent_text_add(&points, "S%d,%d,9,1\n", i, i);
+    }
+    kent_model *m = read_tables(c, TABLE_CASE, kent_text_of(&points), PIPES_TABLE);
+    size_t named = 0;
+    bool counted = false;
+    for (size_t i = 0; i < m->cautions.count; i++) {
+        const char *text = m->cautions.text[i];
+        if (!strstr(text, "on no pipe's route")) continue;
+        named += strstr(text, "point \"S") != NULL;
+        counted = counted || strncmp(text, "20 more points", 14) == 0;
+    }
+    assert_int_equal(named, 10);
+    assert_true(counted);
+    kent_model_free(m);
+    kent_text_clear(&points);
+    kent_catalogue_free(c);
+}
+
 /* The text of the n-th block in ``` after a heading of the manual. */
 static char *block_of_manual(const char *manual, const char *heading, size_t n)
 {
@@ -474,6 +499,7 @@ int main(void)
         cmocka_unit_test(all_faults_of_both_tables_are_said_at_once),
         cmocka_unit_test(a_table_that_cannot_be_had_is_said_where_it_is_named),
         cmocka_unit_test(bytes_that_are_no_text_are_refused),
+        cmocka_unit_test(many_points_off_the_main_are_counted_not_listed),
         cmocka_unit_test(the_example_of_the_manual_is_read),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
