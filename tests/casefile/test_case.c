@@ -137,6 +137,7 @@ static void every_number_of_a_case_arrives(void **state)
     assert_close(a->laying_length, 6.0, 1e-15);
     assert_close(a->joint_deflection, 2.0 * acos(-1.0) / 180.0, 1e-12);
     assert_close(b->wave_speed, 1180.0, 1e-15);
+    assert_close(b->derating, 1.0, 1e-15); /* of no material */
     assert_close(b->inside_diameter, 0.470, 1e-15);
     assert_close(m->fixed_levels[0].loss, 0.5, 1e-15);
     assert_true(m->outflows[0].pressure_dependent);

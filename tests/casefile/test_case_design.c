@@ -25,6 +25,8 @@ static void a_bearing_is_known_in_one_of_four_ways(void **state)
     } ROWS[] = {
         {"allowable_bearing = \"150 kPa\"; factor_inside = 2.0;", 150e3, NAN, NAN, 2.0,
          KENT_BEARING_CONSTANT, false},
+        {"allowable_bearing = \"150 kPa\";", 150e3, NAN, NAN, 1.0,
+         KENT_BEARING_CONSTANT, true},
         {"allowable_bearing = \"0 kPa\";", 0.0, NAN, NAN, 1.0, KENT_BEARING_CONSTANT,
          false},
         {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ), ( \"2 m\", \"120 kPa\" ) );",
@@ -55,9 +57,31 @@ static void a_bearing_is_known_in_one_of_four_ways(void **state)
                                          : s->passive_share == ROWS[i].share);
         assert_close(s->factor_inside, ROWS[i].inside, 1e-15);
         assert_int_equal(s->by_depth_count, s->route == KENT_BEARING_BY_DEPTH ? 2 : 0);
-        assert_int_equal(assumed(m, "factor inside the bearing of bank") != NULL,
-                         ROWS[i].assumes_inside);
+        const char *inside = assumed(m, "factor inside the bearing of bank");
+        assert_int_equal(inside != NULL, ROWS[i].assumes_inside);
+        if (inside) assert_string_equal(inside, "1.0\tfactor_inside not given");
         assert_null(assumed(m, "allowable bearing of sand-SP"));
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_soil_says_where_its_values_come_from(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys, *source; /* how the source starts */
+    } ROWS[] = {
+        {"allowable_bearing = \"90 kPa\";", "given in the case"},
+        {"from = \"peat-PT\";", "given in the case, else "}, /* the first row */
+        {"from = \"sand-SP\"; source = \"borehole 7\";", "borehole 7"},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = with_bank(ROWS[i].keys);
+        kent_model *m = read_sound(c, text);
+        assert_memory_equal(m->soils[0].source, ROWS[i].source, strlen(ROWS[i].source));
         kent_model_free(m);
         free(text);
     }
@@ -276,6 +300,20 @@ static void each_word_of_a_role_is_read(void **state)
         kent_model_free(m);
         free(text);
     }
+    kent_catalogue_free(c);
+}
+
+static void a_straight_is_a_type_and_no_role(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text = replaced(DESIGN_CASE, "fittings = (",
+                          "fittings = ( { at = \"T1\"; type = \"straight\"; },");
+    kent_model *m = read_sound(c, text);
+    assert_int_equal(m->notes[0].type, KENT_STRAIGHT);
+    assert_int_equal(m->notes[0].role, KENT_ROLE_NONE);
+    kent_model_free(m);
+    free(text);
     kent_catalogue_free(c);
 }
 
@@ -503,6 +541,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_bearing_is_known_in_one_of_four_ways),
+        cmocka_unit_test(a_soil_says_where_its_values_come_from),
         cmocka_unit_test(the_bearing_of_a_row_is_assumed_in_its_own_way),
         cmocka_unit_test(a_bearing_that_cannot_be_known_is_refused),
         cmocka_unit_test(zones_of_ground_arrive),
@@ -510,6 +549,7 @@ int main(void)
         cmocka_unit_test(branches_and_roles_arrive),
         cmocka_unit_test(an_open_branch_without_a_bore_is_as_wide_as_it_is),
         cmocka_unit_test(each_word_of_a_role_is_read),
+        cmocka_unit_test(a_straight_is_a_type_and_no_role),
         cmocka_unit_test(points_may_be_held_together),
         cmocka_unit_test(tests_are_stated_or_found_by_a_rule),
         cmocka_unit_test(each_fault_gets_its_one_complaint),

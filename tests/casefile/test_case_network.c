@@ -250,6 +250,14 @@ static void a_scenario_starts_from_the_states_it_names(void **state)
                         "all 2\tnot given");
     kent_model_free(m);
     free(text);
+
+    text =
+        replaced(SOUND_CASE, "scenarios", "states = ( { id = \"dry\"; } );\nscenarios");
+    m = read_sound(c, text);
+    assert_string_equal(m->states[0].id, "dry");
+    assert_null(assumed(m, "states of scenarios that name none")); /* there is one */
+    kent_model_free(m);
+    free(text);
     kent_catalogue_free(c);
 }
 
