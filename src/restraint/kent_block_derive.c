@@ -1,6 +1,7 @@
 /* The block's part of a hand calculation: depths, areas, sides, what is reached. */
 #include "kent_holding_internal.h"
 #include "kent_side_internal.h"
+#include "kent_wedge.h"
 
 #define UP(x) "ceil((" x ")/step - " KENT_SIDE_SLACK_TEXT ")*step"
 
@@ -96,6 +97,23 @@ static void derive_sides(const kent_holding_work *w, kent_holding *h)
                          "10.8", "concrete");
 }
 
+/* How far the face leans on the ground, where something else stands near. */
+static void derive_wedge(const kent_holding_work *w, kent_derivation *d)
+{
+    const double phi = w->soil->friction_angle;
+
+    if (w->fitting->obstacle_count == 0) return;
+    if (isnan(phi)) {
+        kent_derivation_put(d, "phi", KENT_WEDGE_ANGLE, KENT_ANGLE, KENT_ASSUMED,
+                            "friction angle of the soil, not given");
+    } else {
+        kent_derivation_put(d, "phi", phi, KENT_ANGLE, kent_soil_source(w->soil),
+                            "friction angle of the soil");
+    }
+    kent_derivation_work(d, "R", w->reach, KENT_LENGTH, "base*tan(45 + phi/2)", "10.25",
+                         "wedge of ground before the face, at the surface");
+}
+
 static void derive_face(const kent_holding_work *w, kent_holding *h)
 {
     kent_derivation *d = &h->derivation;
@@ -117,6 +135,7 @@ static void derive_face(const kent_holding_work *w, kent_holding *h)
     kent_derivation_work(d, "qr", w->use[KENT_SIDEWAYS] * q, KENT_STRESS,
                          hole ? "Fh/(w*h - Ah)" : "Fh/(w*h)", "10.9",
                          "bearing pressure reached");
+    derive_wedge(w, d);
     derive_reached(w, h, KENT_SIDEWAYS, "qr/q");
 }
 

@@ -30,6 +30,7 @@ typedef enum kent_fault {
     KENT_FAULT_SHALLOW,  /* less cover than the rules' least */
     KENT_FAULT_BEARING,  /* the soil's bearing is not known at this depth */
     KENT_FAULT_FACE,     /* no face of the asked area at this depth */
+    KENT_FAULT_OBSTACLE, /* something stands in the ground that the face leans on */
     KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
     KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
     KENT_FAULT_SOIL_UNSTATED,

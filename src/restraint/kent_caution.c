@@ -125,6 +125,9 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     const kent_block *b = &h->block;
 
     if (b->type == KENT_BLOCK_NONE) return;
+    for (size_t i = 0; i < w->clear.count; i++) {
+        kent_notes_add(&h->cautions, "%s", w->clear.text[i]);
+    }
     if (b->type == KENT_BLOCK_BEARING || b->has_face) caution_bearing(w, h);
     if (w->site.hole > 0.0) {
         kent_notes_add(&h->cautions,

@@ -138,6 +138,9 @@ static void holding_block(kent_holding_work *w, kent_holding *h)
     if (w->fault == KENT_FAULT_NONE) {
         w->fault = kent_block_size(&w->m->rules, &w->site, &w->demand, &h->block);
     }
+    if (w->fault == KENT_FAULT_NONE && !kent_obstacle_clear(w, h)) {
+        w->fault = KENT_FAULT_OBSTACLE;
+    }
     if (w->fault == KENT_FAULT_NONE) {
         holding_reach(w, h);
         return;

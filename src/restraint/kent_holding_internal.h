@@ -25,7 +25,10 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     const kent_soil *lacking; /* whose values are missing; NULL */
     kent_vec3 pull;           /* N, the thrust that the legs are worked out for */
     double pull_factor;
-    kent_notes met; /* what the legs meet; owned */
+    const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
+    double reach;                  /* m, of that wedge at the ground's surface */
+    kent_notes clear;              /* obstacles outside it; owned */
+    kent_notes met;                /* what the legs meet; owned */
 } kent_holding_work;
 
 /* N, unfactored and not negative: the part of a case's thrust in one sense, without the
@@ -36,6 +39,10 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h);   /* what governs
 void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
 void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */
+/* Whether nothing stands in the ground that h's face leans on; else sets obstacle. Says
+ * by how much the others are clear. */
+bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h);
+
 void kent_holding_caution(kent_holding_work *w, kent_holding *h);
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 

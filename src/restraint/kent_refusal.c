@@ -1,5 +1,6 @@
 #include "kent_holding_internal.h"
 #include "kent_said.h"
+#include "kent_wedge.h"
 
 static const struct {
     unsigned lack;
@@ -125,6 +126,25 @@ static void refuse_bearing(const kent_holding_work *w, kent_text *t)
     }
 }
 
+static void refuse_obstacle(const kent_holding_work *w, kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const kent_obstacle *o = w->obstacle;
+
+    kent_text_add(t,
+                  "no block: its face would lean on '%s', %s from the fitting and %s "
+                  "deep, within the wedge of ground that holds it (%s from the face at "
+                  "the surface",
+                  o->what, kent_said_of(KENT_LENGTH, units, o->distance).s,
+                  kent_said_of(KENT_LENGTH, units, o->depth).s,
+                  kent_said_of(KENT_LENGTH, units, w->reach).s);
+    if (isnan(w->soil->friction_angle)) {
+        kent_text_add(t, "; friction angle not given, %s is taken",
+                      kent_said_of(KENT_ANGLE, units, KENT_WEDGE_ANGLE).s);
+    }
+    kent_text_add(t, "); move one of them, or ");
+}
+
 static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          kent_text *t)
 {
@@ -158,6 +178,9 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                       "base is not stated, and one that goes with depth is for faces; "
                       "give vertical_bearing, or ",
                       w->soil->id);
+        break;
+    case KENT_FAULT_OBSTACLE:
+        refuse_obstacle(w, t);
         break;
     case KENT_FAULT_VOLUME:
         kent_text_add(t,

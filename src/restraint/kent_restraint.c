@@ -65,8 +65,10 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
     }
     kent_holding_caution(w, h);
     kent_holding_derive(w, h);
-    const bool lost = h->cautions.failed || h->derivation.failed || w->met.failed;
+    const bool lost =
+        h->cautions.failed || h->derivation.failed || w->met.failed || w->clear.failed;
     kent_notes_clear(&w->met);
+    kent_notes_clear(&w->clear);
     return lost ? kent_error_nomem(err) : KENT_OK;
 }
 

@@ -1,0 +1,61 @@
+/* What stands in the ground that a face leans on. */
+#include "kent_holding_internal.h"
+#include "kent_said.h"
+#include "kent_wedge.h"
+
+static kent_wedge wedge_of(const kent_holding_work *w, const kent_block *b)
+{
+    const double phi = w->soil->friction_angle;
+    return (kent_wedge){
+        .front =
+            0.5 * w->site.diameter + (b->has_face ? b->face_thickness : b->thickness),
+        .half_width = 0.5 * b->face.width,
+        .base = kent_site_axis(&w->site) + 0.5 * b->face.height,
+        .friction_angle = isnan(phi) ? KENT_WEDGE_ANGLE : phi,
+    };
+}
+
+/* m: how clear an obstacle is of the wedge on one side (1, or -1 against the thrust).
+ */
+static double clearance(const kent_holding_work *w, const kent_holding *h,
+                        const kent_wedge *wedge, const kent_obstacle *o, double side)
+{
+    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
+    const kent_vec3 thrust = kent_instant_lasting(&c->worst[KENT_SIDEWAYS]);
+    const double size = side * kent_thrust_horizontal(thrust);
+    const double x = thrust.x / size, y = thrust.y / size;
+    const double along = o->direction.x * x + o->direction.y * y;
+    const double across = o->direction.x * y - o->direction.y * x;
+
+    return kent_wedge_clearance(wedge, o->distance * along, o->distance * across);
+}
+
+/* A block through which the thrust may come from either side leans on both. */
+static bool leans_both_ways(const kent_holding_work *w, const kent_holding *h)
+{
+    return w->site.hole > 0.0 || h->chosen == KENT_ANCHOR_BLOCK;
+}
+
+bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
+{
+    const kent_wedge wedge = wedge_of(w, &h->block);
+    const size_t first = w->fitting->obstacle_first;
+
+    if (!(w->demand.load[KENT_SIDEWAYS] > 0.0)) return true;
+    w->reach = kent_wedge_reach(&wedge);
+    for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
+        const kent_obstacle *o = &w->m->obstacles[first + i];
+        double clear = clearance(w, h, &wedge, o, 1.0);
+        if (leans_both_ways(w, h))
+            clear = fmin(clear, clearance(w, h, &wedge, o, -1.0));
+        if (!(clear > 0.0)) {
+            w->obstacle = o;
+            return false;
+        }
+        kent_notes_add(&w->clear,
+                       "'%s' is clear of the ground that the face leans on by "
+                       "%s",
+                       o->what, kent_said_of(KENT_LENGTH, w->m->units, clear).s);
+    }
+    return true;
+}

@@ -1,0 +1,22 @@
+#include "kent_wedge.h"
+
+#include <math.h>
+
+static const double QUARTER = 0.78539816339744831; /* rad: 45 degrees */
+
+double kent_wedge_reach(const kent_wedge *wedge)
+{
+    return wedge->base * tan(QUARTER + 0.5 * wedge->friction_angle);
+}
+
+double kent_wedge_clearance(const kent_wedge *wedge, double along, double across)
+{
+    const double beyond = along - wedge->front;
+    const double spread = tan(QUARTER - 0.5 * wedge->friction_angle);
+    const double half = wedge->half_width + fmax(0.0, beyond) * spread;
+    const double ahead = beyond - kent_wedge_reach(wedge);
+    const double beside = fabs(across) - half;
+
+    if (along <= 0.0) return fmax(0.0, hypot(fmax(0.0, beside), along));
+    return fmax(0.0, fmax(ahead, beside));
+}

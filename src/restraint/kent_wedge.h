@@ -1,0 +1,25 @@
+/* The wedge of ground in front of a face that must slide up before the face moves, and
+ * what stands in its way. */
+#ifndef KENT_WEDGE_H
+#define KENT_WEDGE_H
+
+/* rad: friction angle of soil where none is stated. */
+#define KENT_WEDGE_ANGLE 0.52359877559829887 /* 30 degrees */
+
+typedef struct kent_wedge {
+    double front;          /* m, level, from the fitting's centre to the face */
+    double half_width;     /* m, of the face */
+    double base;           /* m, ground to the face's base */
+    double friction_angle; /* rad */
+} kent_wedge;
+
+/* m from the face to where the wedge meets the ground's surface. source 10.25 */
+double kent_wedge_reach(const kent_wedge *wedge);
+
+/* m by which a place is clear of the wedge, whatever its depth; 0: inside, or between
+ * fitting and face. along: m, level, from the fitting's centre in the direction of the
+ * thrust; across: m to either side of it. fails never. source docs/theory/10-blocks.md,
+ * 10.25 .. 10.27 */
+double kent_wedge_clearance(const kent_wedge *wedge, double along, double across);
+
+#endif
