@@ -10,7 +10,8 @@
 
 #include "kent_model.h"
 
-enum { KENT_PORTS = 8 }; /* most ports of one fitting */
+/* Most ports of one balance: eight legs, and a branch extended. */
+enum { KENT_PORTS = 9 };
 
 typedef struct kent_port_state {
     double pressure;  /* Pa gauge, at the port */

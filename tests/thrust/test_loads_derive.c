@@ -8,7 +8,7 @@
 #include <stdio.h>
 #include <string.h>
 
-enum { TEXT = 1200 };
+enum { TEXT = 1200, LEGS = 8 };
 
 static const double PI = 3.14159265358979323846;
 
@@ -219,8 +219,8 @@ static void changing_flow_is_worked_out_where_faces_are_given(void **state)
 static void eight_ports_fit_on_a_line(void **state)
 {
     (void)state;
-    kent_port ports[KENT_PORTS];
-    for (size_t i = 0; i < KENT_PORTS; i++) {
+    kent_port ports[LEGS];
+    for (size_t i = 0; i < LEGS; i++) {
         const double turn = 0.7 * (double)i;
         const kent_vec3 out = {cos(turn), sin(turn), 0.1 * (double)i};
         ports[i] = kent_build_port(out, 5e5 + 1e4 * (double)i, i % 2 ? 0.1 : -0.1,
@@ -228,7 +228,7 @@ static void eight_ports_fit_on_a_line(void **state)
         ports[i].momentum_factor = (double)NAN;
     }
     kent_build b = kent_build_new();
-    (void)kent_build_ports(&b, "F", KENT_CROSS, ports, KENT_PORTS);
+    (void)kent_build_ports(&b, "F", KENT_CROSS, ports, LEGS);
     kent_build_derive(&b);
     kent_steady nothing = {0}, *steadies = &nothing;
     kent_error err = {0};
@@ -238,12 +238,11 @@ static void eight_ports_fit_on_a_line(void **state)
     assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
 
     kent_load_case c = loads->fittings[0].cases[0];
-    for (size_t i = 0; i < KENT_PORTS; i++) { /* and changing flow in every leg */
+    for (size_t i = 0; i < LEGS; i++) { /* and changing flow in every leg */
         b.model->ports[i].face = 0.5;
         c.worst[KENT_RESULTANT].balance.port[i].flow_rate = 0.01 * (double)(i + 1);
     }
-    kent_balance_sum(b.model->ports, KENT_PORTS, 1000.0,
-                     &c.worst[KENT_RESULTANT].balance);
+    kent_balance_sum(b.model->ports, LEGS, 1000.0, &c.worst[KENT_RESULTANT].balance);
     kent_derivation d = {0};
     kent_loads_derive(b.model, &b.model->fittings[0], &c, KENT_RESULTANT, &d);
     assert_adds_up(&d, KENT_SI);
