@@ -1,5 +1,6 @@
 #include "kent_limits.h"
 
+#include "kent_overload.h"
 #include "kent_said.h"
 
 /* A peak in the last 2 % of the duration may not be the last word. */
@@ -8,76 +9,6 @@ static const double LATE_SHARE = 0.02;
 static kent_name name_of(const kent_model *m, const kent_scenario_result *run)
 {
     return kent_name_in_state(m, m->scenarios[run->scenario].id, run->state);
-}
-
-/* Pa gauge at a grid point of a span whose head is given. */
-static double pressure_on_span(const kent_model *m, int span, int reaches, int node,
-                               double head)
-{
-    const kent_span *s = &m->spans[span];
-    const double chainage = s->length * (double)node / (double)reaches;
-    return kent_model_pressure(m, head, kent_span_level(m, s, chainage));
-}
-
-/* Highest pressure on a span in one scenario, Pa, and how far along it, m. */
-static double highest_on_span(const kent_results *r, const kent_scenario_result *run,
-                              int span, double *chainage)
-{
-    const kent_model *m = r->model;
-    const int reaches = run->grid->reaches[span];
-    double highest = -INFINITY;
-    for (int n = 0; n <= reaches; n++) {
-        const double p = pressure_on_span(m, span, reaches, n, run->highest[span][n]);
-        if (!(p > highest)) continue;
-        highest = p;
-        *chainage = m->spans[span].length * (double)n / (double)reaches;
-    }
-    return highest;
-}
-
-/* Says so where a pressure (Pa), reached some way along a span (m), passes its rating.
- */
-static void judge_pressure(kent_results *r, int span, double reached, double chainage,
-                           const char *when)
-{
-    const kent_model *m = r->model;
-    const double rating = m->pipes[m->spans[span].pipe].pressure_rating;
-    if (!(reached > rating)) return; /* NaN: no rating is known */
-    kent_notes_add(&r->cautions, "pipe %s: %s reached %s along it in %s, rated %s",
-                   m->spans[span].id, kent_said_of(KENT_PRESSURE, m->units, reached).s,
-                   kent_said_whole(KENT_LENGTH, m->units, chainage).s, when,
-                   kent_said_of(KENT_PRESSURE, m->units, rating).s);
-    r->limit_exceeded = true;
-}
-
-static void judge_rating(kent_results *r, const kent_scenario_result *run)
-{
-    const kent_model *m = r->model;
-    for (size_t i = 0; i < m->span_count; i++) {
-        double chainage = 0.0;
-        const double reached = highest_on_span(r, run, (int)i, &chainage);
-        judge_pressure(r, (int)i, reached, chainage, name_of(m, run).s);
-    }
-}
-
-/* Without flow pressure is highest where a span lies lowest. */
-static void judge_rating_at_rest(kent_results *r)
-{
-    const kent_model *m = r->model;
-    for (size_t i = 0; i < m->span_count; i++) {
-        const kent_span *span = &m->spans[i];
-        const double level = kent_static_level(m, span->node[0]);
-        size_t lowest = span->route_first;
-        for (size_t p = 1; p < span->route_count; p++) {
-            const size_t at = span->route_first + p;
-            if (m->points[m->route[at]].at.z < m->points[m->route[lowest]].at.z) {
-                lowest = at;
-            }
-        }
-        const double z = m->points[m->route[lowest]].at.z;
-        judge_pressure(r, (int)i, kent_model_pressure(m, level, z),
-                       m->chainage[lowest] - m->chainage[span->route_first], "static");
-    }
 }
 
 /* On every fitting that the low pressure touches. */
@@ -159,10 +90,9 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
 
 void kent_limits_judge(kent_results *r)
 {
-    judge_rating_at_rest(r);
+    kent_overload_judge(r);
     if (r->loads) kent_site_test_caution(r->model, &r->loads->test, &r->cautions);
     for (size_t i = 0; i < r->scenario_count; i++) {
-        judge_rating(r, &r->scenarios[i]);
         judge_vapour(r, &r->scenarios[i]);
         judge_lateness(r, &r->scenarios[i]);
         if (i == 0) judge_grid(r, &r->scenarios[i]);

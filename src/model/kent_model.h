@@ -674,6 +674,18 @@ const char *kent_restraint_word(kent_restraint_choice restraint);
 const char *kent_friction_word(kent_friction_law law);
 const char *kent_axial_support_word(kent_axial_support support);
 
+/* What a pipe is rated for. */
+typedef enum kent_rating {
+    KENT_RATING_SERVICE,
+    KENT_RATING_SURGE, /* service and surge together */
+    KENT_RATING_TEST,  /* the site test */
+    KENT_RATINGS
+} kent_rating;
+
+/* Pa gauge, at the water's temperature; with surge that of service where no other is
+ * known. NAN: not known. */
+double kent_pipe_rating(const kent_pipe *p, kent_rating rating);
+
 /* Whether a joint can slip apart under thrust. */
 bool kent_joint_slips(kent_joint joint);
 

@@ -5,15 +5,19 @@
 
 static const double CLEARLY = 1000.0; /* Pa, see kent_extreme_highest */
 
-static double least_rating(const kent_model *m, const kent_fitting *fitting)
+static double least_rating(const kent_model *m, const kent_fitting *fitting,
+                           kent_rating rating)
 {
     double least = NAN;
+    bool own = rating != KENT_RATING_SURGE;
     for (size_t i = 0; i < fitting->port_count; i++) {
         const int span = m->ports[fitting->port_first + i].span;
         if (span < 0) continue;
-        least = fmin(least, m->pipes[m->spans[span].pipe].pressure_rating);
+        const kent_pipe *pipe = &m->pipes[m->spans[span].pipe];
+        least = fmin(least, kent_pipe_rating(pipe, rating)); /* passes over NAN */
+        own = own || !isnan(pipe->surge_rating);
     }
-    return least; /* fmin passes over NAN */
+    return own ? least : NAN;
 }
 
 /* The column that a load case's pressure belongs to. */
@@ -70,10 +74,10 @@ kent_pressures kent_pressures_of(const kent_results *r, size_t fitting)
     const kent_fitting *f = &r->model->fittings[fitting];
     const kent_fitting_loads *loads = &r->loads->fittings[fitting];
     const kent_holding *h = &r->restraints->fittings[fitting];
-    kent_pressures p = {.rating = least_rating(r->model, f),
-                        .governs = -1,
-                        .highest_in = -1,
-                        .lowest_in = -1};
+    kent_pressures p = {.governs = -1, .highest_in = -1, .lowest_in = -1};
+    for (int k = 0; k < KENT_RATINGS; k++) {
+        p.rating[k] = least_rating(r->model, f, (kent_rating)k);
+    }
     for (size_t k = 0; k < KENT_PRESSURES; k++) {
         p.at[k] = NAN;
     }

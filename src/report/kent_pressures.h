@@ -18,10 +18,12 @@ typedef enum kent_pressure {
 } kent_pressure;
 
 typedef struct kent_pressures {
-    double at[KENT_PRESSURES]; /* Pa; NAN: not there */
-    double rating; /* Pa, the least of the pipes that meet; NAN: not known */
-    int governs;   /* kent_pressure; -1: nothing governs */
-    int highest_in, lowest_in; /* index into results' scenarios; -1 */
+    double at[KENT_PRESSURES];   /* Pa; NAN: not there */
+    double rating[KENT_RATINGS]; /* Pa, the least of the pipes that meet; with surge
+                                    and under test only where one has such a rating of
+                                    its own; NAN: not known */
+    int governs;                 /* kent_pressure; -1: nothing governs */
+    int highest_in, lowest_in;   /* index into results' scenarios; -1 */
 } kent_pressures;
 
 kent_pressures kent_pressures_of(const kent_results *r, size_t fitting);

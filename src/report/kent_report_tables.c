@@ -347,6 +347,19 @@ static void print_totals(kent_page *page)
 
 /* ---- the table of pressures ------------------------------------------------------ */
 
+/* Whether any pipe has a rating with surge or under test of its own. */
+static bool has_ratings(const kent_page *page, kent_rating rating)
+{
+    const kent_model *m = page->model;
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        const kent_pipe *p = &m->pipes[i];
+        const double own =
+            rating == KENT_RATING_SURGE ? p->surge_rating : p->test_rating;
+        if (!isnan(own)) return true;
+    }
+    return false;
+}
+
 static void pressure_row(const kent_page *page, size_t i, kent_table *t)
 {
     const kent_pressures p = kent_pressures_of(page->results, i);
@@ -356,15 +369,20 @@ static void pressure_row(const kent_page *page, size_t i, kent_table *t)
             kent_shown_quantity(KENT_PRESSURE, page->units, p.at[k]);
         kent_table_cell(t, "%s%s", number.text, k == p.governs ? "*" : " ");
     }
-    kent_table_cell(t, "%s ",
-                    kent_shown_quantity(KENT_PRESSURE, page->units, p.rating).text);
+    for (int k = 0; k < KENT_RATINGS; k++) {
+        if (k > KENT_RATING_SERVICE && !has_ratings(page, (kent_rating)k)) continue;
+        const kent_shown number =
+            kent_shown_quantity(KENT_PRESSURE, page->units, p.rating[k]);
+        kent_table_cell(t, "%s ", number.text);
+    }
 }
 
 static void print_pressures(kent_page *page)
 {
     const kent_shown unit = kent_shown_unit(KENT_PRESSURE, page->units);
     const char *bar = unit.text;
-    const kent_column columns[] = {
+    enum { BEFORE = 7 }; /* ratings that any pipe may lack come last */
+    kent_column columns[] = {
         {"point", "", KENT_ALIGN_LEFT, true},
         {"steady ", bar, KENT_ALIGN_RIGHT, false},
         {"static ", bar, KENT_ALIGN_RIGHT, false},
@@ -372,9 +390,14 @@ static void print_pressures(kent_page *page)
         {"highest ", bar, KENT_ALIGN_RIGHT, false},
         {"lowest ", bar, KENT_ALIGN_RIGHT, false},
         {"rating ", bar, KENT_ALIGN_RIGHT, false},
+        {"", bar, KENT_ALIGN_RIGHT, false},
+        {"", bar, KENT_ALIGN_RIGHT, false},
     };
-    kent_table t = {.columns = columns,
-                    .column_count = sizeof columns / sizeof columns[0]};
+    kent_table t = {.columns = columns, .column_count = BEFORE};
+    for (int k = KENT_RATING_SURGE; k < KENT_RATINGS; k++) {
+        if (!has_ratings(page, (kent_rating)k)) continue;
+        columns[t.column_count++].head = k == KENT_RATING_SURGE ? "+surge " : "tested ";
+    }
     for (size_t i = 0; i < page->model->fitting_count; i++) {
         const size_t f = page->order[i];
         if (page->model->fittings[f].point >= 0) pressure_row(page, f, &t);

@@ -53,7 +53,20 @@ static double joints(const kent_row *r) { return r->holding->restrained_length; 
 static double curve_radius(const kent_row *r) { return r->fitting->curve_radius; }
 static double curve_length(const kent_row *r) { return r->fitting->curve_length; }
 static double cover(const kent_row *r) { return r->fitting->cover; }
-static double rating(const kent_row *r) { return r->pressures.rating; }
+static double rating(const kent_row *r)
+{
+    return r->pressures.rating[KENT_RATING_SERVICE];
+}
+
+static double surge_rating(const kent_row *r)
+{
+    return r->pressures.rating[KENT_RATING_SURGE];
+}
+
+static double test_rating(const kent_row *r)
+{
+    return r->pressures.rating[KENT_RATING_TEST];
+}
 
 static kent_vec3 thrust(const kent_row *r)
 {
@@ -349,6 +362,8 @@ static const kent_summary_column COLUMNS[] = {
     {"lowest pressure", lowest, NULL, KENT_PRESSURE, NARROW},
     {"lowest in", NULL, lowest_in, KENT_RATIO, 0},
     {"rating", rating, NULL, KENT_PRESSURE, NARROW},
+    {"rating with surge", surge_rating, NULL, KENT_PRESSURE, 0},
+    {"rating under test", test_rating, NULL, KENT_PRESSURE, 0},
     {"runner-up", NULL, runner_up_case, KENT_RATIO, 0},
     {"runner-up factored thrust", runner_up, NULL, KENT_FORCE, 0},
     {"soil", NULL, soil, KENT_RATIO, 0},

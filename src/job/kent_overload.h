@@ -1,0 +1,12 @@
+/* Pressures that pipes meet, against what they are rated for: still water and steady
+ * flow in service, scenarios with surge, the site test. */
+#ifndef KENT_OVERLOAD_H
+#define KENT_OVERLOAD_H
+
+#include "kent_job.h"
+
+/* Adds a caution to r->cautions for every rating passed, with its place, and sets
+ * r->limit_exceeded; says of which pipes no rating is known. */
+void kent_overload_judge(kent_results *r);
+
+#endif
