@@ -52,18 +52,21 @@ static void say_warmth(kent_filling *f, kent_record *record,
 }
 
 /* Ratings of the case hold at the water's temperature; those of the class are for cold
- * water, and a warm plastic keeps a share of them. */
+ * water, and a warm plastic keeps a share of them. A rating in service that the case
+ * states means that the class's do not hold: not with surge and under test either. */
 void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_class *row,
                        const kent_material *material, kent_pipe *p)
 {
+    const kent_pipe_class *holds =
+        kent_record_has(record, "pressure_rating") ? NULL : row;
     const struct {
         const char *key;
         double of_class; /* Pa */
         double *rating;
     } rows[] = {
-        {"pressure_rating", row ? row->pressure_rating : NAN, &p->pressure_rating},
-        {"surge_rating", row ? row->surge_rating : NAN, &p->surge_rating},
-        {"test_rating", row ? row->test_rating : NAN, &p->test_rating},
+        {"pressure_rating", holds ? holds->pressure_rating : NAN, &p->pressure_rating},
+        {"surge_rating", holds ? holds->surge_rating : NAN, &p->surge_rating},
+        {"test_rating", holds ? holds->test_rating : NAN, &p->test_rating},
     };
     const double share =
         material ? kent_material_derating(material, f->model->water.temperature) : 1.0;

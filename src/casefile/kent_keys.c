@@ -258,7 +258,7 @@ const kent_key KENT_KEYS[] = {
     NUMBER("pipe", "loss", WITHIN(0.0, 1e6), "0.0",
            "minor losses spread along it, K on its bore"),
     QUANTITY("pipe", "pressure_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
-             "pressure the pipe is rated for"),
+             "pressure the pipe is rated for, in place of all of its class's ratings"),
     QUANTITY("pipe", "surge_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
              "pressure it is rated for with surge"),
     QUANTITY("pipe", "test_rating", KENT_PRESSURE, WITHIN(1e3, 1e9), "the class's",
