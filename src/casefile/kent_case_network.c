@@ -88,15 +88,23 @@ void kent_fill_outflow(kent_filling *f, kent_record *record, size_t index)
 static void fill_curve(kent_filling *f, kent_record *record, kent_valve *v)
 {
     const int type = kent_record_field(record, "type")->index;
-    if (kent_record_has(record, "characteristic")) {
-        if (kent_record_has(record, "type")) {
-            kent_record_complain(&f->reader, record, "characteristic",
-                                 "type and characteristic are both given; keep one");
-        }
+    const bool own = kent_record_has(record, "characteristic");
+    const kent_valve_type *row = type >= 0 && (size_t)type < f->catalogue->valve_count
+                                     ? &f->catalogue->valves[type]
+                                     : NULL;
+    if (own && kent_record_has(record, "type") && !(row && row->curve.count == 0)) {
+        kent_record_complain(&f->reader, record, "characteristic",
+                             "type and characteristic are both given; keep one");
+    } else if (row && row->curve.count == 0 && !own) {
+        kent_record_complain(&f->reader, record, "type",
+                             "\"%s\" is known fully open only; give its characteristic "
+                             "as well",
+                             row->id);
+    }
+    if (own) {
         (void)kent_record_curve(&f->reader, record, &v->curve);
-        (void)snprintf(v->type, sizeof v->type, "given");
-    } else if (type >= 0 && (size_t)type < f->catalogue->valve_count) {
-        const kent_valve_type *row = &f->catalogue->valves[type];
+        (void)snprintf(v->type, sizeof v->type, "%s", row ? row->id : "given");
+    } else if (row) {
         v->curve = row->curve;
         memcpy(v->type, row->id, sizeof v->type);
     } else {

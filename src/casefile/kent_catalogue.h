@@ -42,9 +42,9 @@ typedef struct kent_material {
 } kent_material;
 
 typedef struct kent_valve_type {
-    char id[KENT_ID]; /* "butterfly" */
-    kent_valve_curve curve;
-    double loss; /* K fully open; NAN */
+    char id[KENT_ID];       /* "butterfly" */
+    kent_valve_curve curve; /* count 0: known fully open only */
+    double loss;            /* K fully open; NAN */
     kent_provenance from;
 } kent_valve_type;
 

@@ -95,6 +95,10 @@ void kent_catalogue_add_valve(kent_reader *r, kent_record *record, kent_catalogu
     kent_record_copy(record, "id", NULL, v->id, sizeof v->id);
     if (kent_record_has(record, "characteristic")) {
         (void)kent_record_curve(r, record, &v->curve);
+    } else if (isnan(v->loss)) {
+        kent_record_complain(r, record, NULL,
+                             "nothing is said of what it passes; give characteristic, "
+                             "loss, or both");
     }
 }
 

@@ -614,8 +614,10 @@ const kent_key KENT_KEYS[] = {
     PROVENANCE("material"),
 
     ID("valve_type", "id", "required", "its name"),
-    LIST("valve_type", "characteristic", "", "required", "pairs (opening, K)"),
-    NUMBER("valve_type", "loss", BETWEEN(0.0, 1e9), "none", "K fully open"),
+    LIST("valve_type", "characteristic", "", "none",
+         "pairs (opening, K); without it the case has to give its own"),
+    NUMBER("valve_type", "loss", BETWEEN(0.0, 1e9), "none",
+           "K fully open; required without characteristic"),
     PROVENANCE("valve_type"),
 
     ID("soil_row", "id", "required", "its name, with its USCS symbol"),

@@ -146,12 +146,15 @@ static void list_valves(const kent_listing *l)
                     .column_count = sizeof columns / sizeof columns[0]};
     for (size_t i = 0; i < l->catalogue->valve_count; i++) {
         const kent_valve_type *v = &l->catalogue->valves[i];
+        const bool known = v->curve.count > 0; /* else fully open only */
         kent_table_cell(&t, "%s", v->id);
         number(&t, v->loss, 2);
         for (size_t k = 0; k < sizeof OPENINGS / sizeof OPENINGS[0]; k++) {
-            number(&t, kent_valve_relative_capacity(&v->curve, OPENINGS[k]), 3);
+            number(&t,
+                   known ? kent_valve_relative_capacity(&v->curve, OPENINGS[k]) : NAN,
+                   3);
         }
-        number(&t, v->curve.lowest_given, 2);
+        number(&t, known ? v->curve.lowest_given : NAN, 2);
         origin(l, &t, &v->from);
     }
     finish(l, "Valves: capacity E against opening, relative to full opening", &t);

@@ -308,6 +308,16 @@ static void tables_of_pipes_that_make_no_sense_are_refused(void **state)
     }
 }
 
+/* ---- valves ---------------------------------------------------------------------- */
+
+static void a_type_of_valve_says_something_of_what_it_passes(void **state)
+{
+    (void)state;
+    assert_config_refused(
+        "valves.cfg", "format = 1;\nvalves = ( { id = \"mute\"; " PROVENANCE "} );\n",
+        "nothing is said of what it passes");
+}
+
 /* ---- rules ----------------------------------------------------------------------- */
 
 #define RULES                                                                          \
@@ -345,6 +355,7 @@ int main(void)
         cmocka_unit_test(a_table_may_give_ratios_or_one_wall_in_place_of_walls),
         cmocka_unit_test(tolerances_may_go_by_the_size),
         cmocka_unit_test(tables_of_pipes_that_make_no_sense_are_refused),
+        cmocka_unit_test(a_type_of_valve_says_something_of_what_it_passes),
         cmocka_unit_test(rules_may_have_a_factor_of_their_own_under_test),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
