@@ -307,7 +307,7 @@ kent_shown kent_shown_governing(const kent_fitting_loads *loads, const kent_part
 bool kent_shown_not_held(const kent_holding *holding)
 {
     return !holding->held && !holding->needs_nothing &&
-           holding->chosen != KENT_NO_RESTRAINT;
+           (holding->chosen != KENT_NO_RESTRAINT || holding->soil_beside);
 }
 
 /* In a word or two, why nothing holds it; the note under the table says the rest. A
@@ -357,8 +357,10 @@ kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
     if (holding->needs_nothing) {
         return shown(fitting->within_deflection ? "joint takes it" : "not needed");
     }
-    if (holding->chosen == KENT_NO_RESTRAINT) return shown("none asked");
+    const bool left = holding->chosen == KENT_NO_RESTRAINT && !holding->soil_beside;
+    if (left) return shown("none asked");
     if (!holding->held) return refusal(m, fitting, room);
+    if (holding->soil_beside) return shown("soil beside");
     if (part->face) {
         const double sides[3] = {b->face.width, b->face.height, b->face_thickness};
         return three_sides("face ", sides, system, room);

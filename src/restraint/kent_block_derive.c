@@ -278,3 +278,23 @@ void kent_block_derive(const kent_holding_work *w, kent_holding *h)
     if (h->block.type == KENT_BLOCK_GRAVITY) derive_gravity(w, h);
     if (h->block.type == KENT_BLOCK_BASE) derive_base(w, h);
 }
+
+/* A curve that the soil beside it holds. */
+void kent_curve_derive(const kent_holding_work *w, kent_holding *h)
+{
+    kent_derivation *d = &h->derivation;
+
+    if (!h->soil_beside || isnan(h->utilisation)) return;
+    kent_derivation_heading(d, "Side load along the curve");
+    kent_derivation_put(d, "theta", w->fitting->angle, KENT_ANGLE, KENT_COMPUTED,
+                        "turn of the curve");
+    kent_derivation_put(d, "Rc", w->fitting->curve_radius, KENT_LENGTH, KENT_COMPUTED,
+                        "its radius");
+    kent_derivation_work(d, "ws", w->side_load, KENT_FORCE_PER_LENGTH,
+                         "Fh/(2*sin(theta/2)*Rc)", "10.28", "side load, factored");
+    derive_depth(w, h);
+    kent_bearing_derive(w, d);
+    kent_derivation_work(d, "qr", w->side_load / w->site.diameter, KENT_STRESS, "ws/OD",
+                         "10.29", "bearing pressure reached on the pipe");
+    derive_reached(w, h, KENT_SIDEWAYS, "qr/q");
+}

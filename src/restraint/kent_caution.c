@@ -176,6 +176,24 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
                    kent_leg_rule_of(w->fitting)->says);
 }
 
+/* What its role and shape ask of whoever builds it. */
+static void caution_role(const kent_holding_work *w, kent_holding *h)
+{
+    if (w->fitting->role == KENT_ROLE_HYDRANT && h->block.type != KENT_BLOCK_NONE) {
+        kent_notes_add(&h->cautions,
+                       "keep the block clear of the hydrant's drain and its gravel "
+                       "pocket, bolts and joints");
+    }
+    if (h->soil_beside && h->held) {
+        kent_notes_add(
+            &h->cautions,
+            "the curve presses on the fill beside the pipe with %s factored: "
+            "that fill is taken to bear as much as soil '%s'",
+            kent_said_of(KENT_FORCE_PER_LENGTH, w->m->units, w->side_load).s,
+            w->soil->id);
+    }
+}
+
 void kent_holding_caution(kent_holding_work *w, kent_holding *h)
 {
     if (w->fitting->within_deflection) {
@@ -193,4 +211,5 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
     caution_peak(w, h);
     caution_block(w, h);
     caution_joints(w, h);
+    caution_role(w, h);
 }

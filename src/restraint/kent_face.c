@@ -10,6 +10,12 @@ double kent_face_height_limit(const kent_rules *rules, double axis_depth)
     return ratio * axis_depth / (1.0 - 0.5 * ratio);
 }
 
+/* source docs/theory/10-blocks.md, 10.28 */
+double kent_curve_side_load(double thrust, double angle, double radius)
+{
+    return thrust / (2.0 * sin(0.5 * angle) * radius);
+}
+
 /* The narrowest width that gives area under this height, or a negative number where
  * the rules' width to height allow none. m */
 static double face_width(const kent_rules *rules, double area, double height)

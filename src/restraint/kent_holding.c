@@ -150,8 +150,32 @@ static void holding_block(kent_holding_work *w, kent_holding *h)
     h->block.bearing_area = area; /* what was asked for still tells something */
 }
 
+/* A curve leans on the soil beside the pipe, all along.
+ * source docs/theory/10-blocks.md, 10.28, 10.29 */
+static void holding_curve(kent_holding_work *w, kent_holding *h)
+{
+    const kent_fitting *f = w->fitting;
+    const double sideways = w->demand.load[KENT_SIDEWAYS];
+    const bool level =
+        w->demand.load[KENT_UPWARD] <= 0.0 && w->demand.load[KENT_DOWNWARD] <= 0.0;
+
+    w->side_load = kent_curve_side_load(sideways, f->angle, f->curve_radius);
+    if (!level || !(sideways > 0.0) || !kent_soil_counts(w->soil)) return;
+    const double use = w->side_load / (w->site.allowable * w->site.diameter);
+    if (isnan(use)) return;
+    holding_govern(w, h, KENT_SIDEWAYS);
+    w->use[KENT_SIDEWAYS] = use;
+    h->utilisation = use;
+    h->factor_reached = h->factor_asked / use;
+    h->held = use <= 1.0;
+}
+
 void kent_holding_size(kent_holding_work *w, kent_holding *h)
 {
+    if (h->soil_beside) {
+        holding_curve(w, h);
+        return;
+    }
     switch (h->chosen) {
     case KENT_THRUST_BLOCK:
     case KENT_ANCHOR_BLOCK:
@@ -235,8 +259,23 @@ static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
     h->factor_reached = h->factor_asked / use;
 }
 
+/* A sleeve holds on to a main that lay there before: what its joints do is not known.
+ */
+static bool on_old_main(const kent_holding_work *w)
+{
+    const kent_port *run = &w->m->ports[w->fitting->port_first];
+
+    if (w->fitting->role != KENT_ROLE_TAPPING) return false;
+    if (run->span < 0) return true;
+    return kent_joint_slips(w->m->pipes[w->m->spans[run->span].pipe].joint);
+}
+
 void kent_holding_legs(kent_holding_work *w, kent_holding *h)
 {
+    if (on_old_main(w)) {
+        w->lack |= KENT_LACK_OLD_MAIN;
+        return;
+    }
     const kent_leg_rule *rule = kent_leg_rule_of(w->fitting);
     const size_t end = rule->first + rule->count < w->fitting->port_count
                            ? rule->first + rule->count

@@ -101,6 +101,7 @@ void kent_holding_derive(const kent_holding_work *w, kent_holding *h)
         if (counts && s != h->sense) derive_load(w, h, s);
     }
     kent_block_derive(w, h);
+    kent_curve_derive(w, h);
     for (size_t i = 0; i < h->leg_count; i++) {
         kent_leg_derive(w, h, &h->legs[i]);
     }

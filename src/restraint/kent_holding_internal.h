@@ -26,6 +26,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     kent_vec3 pull;           /* N, the thrust that the legs are worked out for */
     double pull_factor;
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
+    double side_load;              /* N/m, factored, of a curve; NAN */
     double reach;                  /* m, of that wedge at the ground's surface */
     kent_notes clear;              /* obstacles outside it; owned */
     kent_notes met;                /* what the legs meet; owned */
@@ -49,6 +50,7 @@ void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 /* Parts of the hand calculation; all add to h's derivation. */
 void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d); /* puts q */
 void kent_block_derive(const kent_holding_work *w, kent_holding *h);
+void kent_curve_derive(const kent_holding_work *w, kent_holding *h);
 void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg);
 
 /* "given" or "catalogue": where the values of a soil, or the factor of a case, come

@@ -29,11 +29,12 @@ typedef enum kent_lack {
     KENT_LACK_PASSIVE_RATIO = 32,
     KENT_LACK_COVER = 64,
     KENT_LACK_PIPE_MASS = 128,
-    KENT_LACK_SOIL = 256,   /* not stated, or cannot be relied on */
-    KENT_LACK_PIPE = 512,   /* the leg is no pipe of the network */
-    KENT_LACK_GRIP = 1024,  /* the values given make no friction at all */
-    KENT_LACK_SOUND = 2048, /* from somewhere on, no ground along the leg counts */
-    KENT_LACK_PIECES = 4096 /* more changes of ground than KENT_LEG_PIECES */
+    KENT_LACK_SOIL = 256,      /* not stated, or cannot be relied on */
+    KENT_LACK_PIPE = 512,      /* the leg is no pipe of the network */
+    KENT_LACK_GRIP = 1024,     /* the values given make no friction at all */
+    KENT_LACK_SOUND = 2048,    /* from somewhere on, no ground along the leg counts */
+    KENT_LACK_OLD_MAIN = 8192, /* a sleeve on a main whose joints slip */
+    KENT_LACK_PIECES = 4096    /* more changes of ground than KENT_LEG_PIECES */
 } kent_lack;
 
 enum { KENT_LEG_PIECES = 8 }; /* most stretches of different ground along one leg */

@@ -23,6 +23,10 @@ static void joints_offer(const kent_holding_work *w, const kent_holding *h,
     for (size_t i = 0; i < h->leg_count; i++) {
         fits = fits && h->legs[i].fits;
     }
+    if (w->lack & KENT_LACK_OLD_MAIN) {
+        kent_text_add(t, "a structure of its own");
+        return;
+    }
     if (h->leg_count == 0) {
         kent_text_add(t, "restrained joints, once their length can be worked out");
         return;
@@ -199,8 +203,10 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
 }
 
 /* What keeps lengths from being given, unless the ground itself does. */
-static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
+static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
+                           kent_notes *notes)
 {
+    const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
     kent_text t = {0};
 
     for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
@@ -241,6 +247,12 @@ static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
         kent_notes_add(notes, "no restrained length: it runs into ground that gives no "
                               "restraint, to the end of the pipe");
     }
+    if ((w->lack & KENT_LACK_OLD_MAIN) && (!h->held || joints)) {
+        kent_notes_add(
+            notes, "restrained joints do not hold a tapping sleeve: the main that it "
+                   "sits on lay there before, and its joints slip; use a thrust "
+                   "block, or tie the main's joints first");
+    }
     if (w->lack & KENT_LACK_PIECES) {
         kent_notes_add(notes,
                        "no restrained length: the ground changes more than %d times "
@@ -251,13 +263,54 @@ static void refuse_lengths(const kent_holding_work *w, kent_notes *notes)
     kent_text_clear(&t);
 }
 
+/* What a curve asks of the soil beside it, where that cannot give it. */
+static void refuse_curve(const kent_holding_work *w, const kent_holding *h,
+                         kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const bool level =
+        w->demand.load[KENT_UPWARD] <= 0.0 && w->demand.load[KENT_DOWNWARD] <= 0.0;
+
+    if (h->held) return;
+    kent_text_add(t, "the curve presses on the soil beside it with %s factored, ",
+                  kent_said_of(KENT_FORCE_PER_LENGTH, units, w->side_load).s);
+    if (!level) {
+        kent_text_add(t,
+                      "and up or down too, which is not judged: weigh it against the "
+                      "ground above, or make the turn with bends that are held");
+    } else if (!w->soil) {
+        kent_text_add(t, "and that soil is not stated; give ground.soil");
+    } else if (!kent_soil_counts(w->soil)) {
+        kent_text_add(
+            t,
+            "and that soil, '%s', gives nothing: replace it, or make the turn "
+            "with bends on piles",
+            w->soil->id);
+    } else if (isnan(h->utilisation)) {
+        kent_text_add(t,
+                      "and what that soil bears here is not known: give cover and what "
+                      "the bearing of soil '%s' goes by",
+                      w->soil->id);
+    } else {
+        kent_text_add(
+            t,
+            "%.2f of what it may bear: lay it to a radius of %s or more, or "
+            "make the turn with bends that are held",
+            h->utilisation,
+            kent_said_of(KENT_LENGTH, units, w->fitting->curve_radius * h->utilisation)
+                .s);
+    }
+}
+
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
 {
     const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
     const bool soft = w->soil && !kent_soil_counts(w->soil);
     kent_text t = {0};
 
-    if (h->chosen == KENT_NO_RESTRAINT) {
+    if (h->soil_beside) {
+        refuse_curve(w, h, &t);
+    } else if (h->chosen == KENT_NO_RESTRAINT) {
         kent_text_add(&t, "restraint \"none\" is asked for: nothing holds %s",
                       kent_said_of(KENT_FORCE, w->m->units, h->design_thrust).s);
     } else if (joints && !h->held && soft) {
@@ -271,7 +324,7 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
     h->cautions.failed = h->cautions.failed || t.failed;
     kent_text_clear(&t);
 
-    refuse_lengths(w, &h->cautions);
+    refuse_lengths(w, h, &h->cautions);
     for (size_t i = 0; i < w->met.count && (joints || !h->held); i++) {
         kent_notes_add(&h->cautions, "%s", w->met.text[i]);
     }

@@ -44,6 +44,7 @@ static void holding_start(kent_holding *h, const kent_fitting *f)
         .runner_up_load = NAN,
         .by_sense = {-1, -1, -1, -1},
         .chosen = f->restraint,
+        .soil_beside = f->type == KENT_CURVE && f->restraint == KENT_NO_RESTRAINT,
         .design_thrust = NAN,
         .factor_asked = NAN,
         .block = kent_block_none(),
@@ -101,6 +102,7 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             .loads = &loads->fittings[i],
             .standings = &standings,
             .soil = soil,
+            .side_load = NAN,
             .site = site_of(&fitting, soil, &m->rules),
         };
         holding_start(h, &fitting);
@@ -111,7 +113,8 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             goto done;
         }
         r->concrete += h->block.volume + h->block.face_volume;
-        if (!h->held && !h->needs_nothing && h->chosen != KENT_NO_RESTRAINT) {
+        const bool asked = h->chosen != KENT_NO_RESTRAINT || h->soil_beside;
+        if (!h->held && !h->needs_nothing && asked) {
             r->not_held++;
         }
     }

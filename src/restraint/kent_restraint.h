@@ -40,6 +40,10 @@ double kent_block_thickness(const kent_rules *rules, kent_face face, double diam
  * less water's where it is under the water table. */
 double kent_gravity_volume(double upward, double factor, double unit_weight);
 
+/* N/m: how a main that curves through an angle (rad, > 0) at a radius (m) presses on
+ * the soil beside it, from the thrust of the whole curve (N). source 10.28 */
+double kent_curve_side_load(double thrust, double angle, double radius);
+
 /* Friction and bearing of soil on a metre of pipe, published iron-pipe form. */
 typedef struct kent_soil_grip {
     double pipe_weight, water_weight; /* N/m */
@@ -104,6 +108,7 @@ typedef struct kent_holding {
     int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
     kent_restraint_choice chosen;
     bool held;            /* false: nothing here can hold it, or nothing was asked */
+    bool soil_beside;     /* a curve, left to the soil beside it, all along */
     bool needs_nothing;   /* within joint deflection, or no thrust */
     double design_thrust; /* N, factored, of the governing case and sense */
     double factor_asked, factor_reached, utilisation; /* NAN where not held */

@@ -1,0 +1,269 @@
+/* Fittings that are held in ways of their own: curves, tapping sleeves, hydrants,
+ * groups.
+ */
+#include "kent_arith.h"
+#include "kent_hand.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+static const double PI = 3.14159265358979323846;
+static const double DEGREE = 3.14159265358979323846 / 180.0; /* rad */
+
+static const kent_hand_case TEST[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6}};
+
+static void finish(kent_build *b, kent_restraints *r)
+{
+    kent_restraints_free(r);
+    kent_build_clear(b);
+}
+
+/* ---- curves ---------------------------------------------------------------------- */
+
+/* 620 mm outside, cover 1.5 m, 150 kPa; turns by 22.5 degrees at C along an arc. The
+ * derived fitting is made a curve here, as a route that follows one makes it. */
+static kent_build main_that_curves(double radius, double rise)
+{
+    kent_build b = kent_build_new();
+    const double turn = 22.5 * DEGREE;
+    (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "C", 0.0, 0.0, 50.0 + rise);
+    (void)kent_build_point(&b, "E", 200.0 * cos(turn), 200.0 * sin(turn), 50.0);
+    (void)kent_build_pipe(&b, "P", "A C E", 0.6, 1000.0);
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_outflow(&b, "E", 0.0);
+    (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    b.model->ground.water_table = (double)INFINITY;
+    b.model->loads.test_pressure = 1.0e6;
+    kent_build_derive(&b);
+    kent_fitting *f = &b.model->fittings[kent_build_fitting_of(&b, "C")];
+    f->type = KENT_CURVE;
+    f->restraint = KENT_NO_RESTRAINT;
+    f->curve_radius = radius;
+    f->curve_length = radius * f->angle;
+    return b;
+}
+
+static const kent_holding *at_c(const kent_build *b, const kent_restraints *r)
+{
+    return &r->fittings[kent_build_fitting_of(b, "C")];
+}
+
+/* A pull S round a radius R presses with S/R per metre (thin rings; any textbook of
+ * statics): 1.5 x 302 kN / R on 150 kPa x 0.62 m, whatever the angle. */
+static void
+a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius(void **state)
+{
+    (void)state;
+    const double pull = 1.5 * 1.0e6 * 0.25 * PI * 0.62 * 0.62;
+    const double limit = pull / (150e3 * 0.62); /* m, 4.87 */
+    for (int i = 0; i < 3; i++) {
+        const double radius = limit * (i == 0 ? 20.0 : i == 1 ? 1.01 : 0.99);
+        kent_build b = main_that_curves(radius, 0.0);
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        const kent_holding *h = at_c(&b, r);
+        assert_close(h->utilisation, limit / radius, 1e-9);
+        assert_close(h->factor_reached, 1.5 * radius / limit, 1e-9);
+        assert_true(h->held == (i < 2));
+        assert_int_equal(h->block.type, KENT_BLOCK_NONE);
+        assert_int_equal(r->not_held, h->held ? 0 : 1);
+        if (h->held) {
+            kent_hand_expect(h, "presses on the fill beside the pipe");
+            assert_false(kent_hand_says(h, "nothing holds"));
+        } else {
+            kent_hand_expect(h, "lay it to a radius of 4.87 m or more");
+        }
+        finish(&b, r);
+    }
+    assert_close(kent_curve_side_load(2.0 * pull * sin(0.2), 0.4, 100.0), pull / 100.0,
+                 1e-12);
+}
+
+static void a_curve_that_cannot_be_judged_is_not_held(void **state)
+{
+    (void)state;
+    kent_build b = main_that_curves(100.0, 10.0); /* a crest, too */
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    assert_false(at_c(&b, r)->held);
+    kent_hand_expect(at_c(&b, r), "up or down too, which is not judged");
+    finish(&b, r);
+
+    b = main_that_curves(100.0, 0.0);
+    b.model->soils[0].unreliable = true;
+    r = kent_hand_size(&b, TEST, 1);
+    assert_false(at_c(&b, r)->held);
+    kent_hand_expect(at_c(&b, r), "that soil, 'till', gives nothing");
+    finish(&b, r);
+
+    b = main_that_curves(100.0, 0.0);
+    b.model->fittings[kent_build_fitting_of(&b, "C")].soil = -1;
+    r = kent_hand_size(&b, TEST, 1);
+    assert_false(at_c(&b, r)->held);
+    kent_hand_expect(at_c(&b, r), "that soil is not stated");
+    finish(&b, r);
+}
+
+static void every_line_of_a_curve_follows_from_those_above(void **state)
+{
+    (void)state;
+    kent_build b = main_that_curves(100.0, 0.0);
+    b.model->soils[0].factor_inside = 1.5;
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_derivation *d = &at_c(&b, r)->derivation;
+    assert_non_null(kent_derivation_find(d, "ws"));
+    for (size_t k = 0; k < 2 * d->count; k++) {
+        const kent_system system = k < d->count ? KENT_SI : KENT_US;
+        const kent_line *at = &d->lines[k % d->count];
+        char digits[512], printed[64], why[1024];
+        if (at->formula[0] == '\0') continue;
+        kent_line_numbers(d, k % d->count, system, digits, sizeof digits);
+        kent_line_value(at, system, printed, sizeof printed);
+        if (!kent_arith_agrees(digits, printed, why, sizeof why)) {
+            fail_msg("%s = %s: %s", at->symbol, at->formula, why);
+        }
+    }
+    finish(&b, r);
+}
+
+/* ---- what serves a branch -------------------------------------------------------- */
+
+/* A tee at T off a main along x, with what its note says of it. */
+static kent_build main_with_branch(kent_role role, kent_restraint_choice choice,
+                                   kent_joint joint)
+{
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "T", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "E", 200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "S", 0.0, 100.0, 50.0);
+    const int run = kent_build_pipe(&b, "P", "A T E", 0.6, 1000.0);
+    const int branch = kent_build_pipe(&b, "Q", "T S", 0.2, 1000.0);
+    b.model->pipes[run].joint = joint;
+    b.model->pipes[branch].material_density = 7050.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_outflow(&b, "E", 0.0);
+    (void)kent_build_outflow(&b, "S", 0.0);
+    const int t = kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    kent_soil *till = &b.model->soils[t];
+    till->friction_angle = 30.0 * DEGREE;
+    till->cohesion = 0.0;
+    till->friction_ratio = 0.75;
+    b.model->ground.water_table = (double)INFINITY;
+    const int note = kent_build_note(&b, "T");
+    b.model->notes[note].role = role;
+    b.model->notes[note].restraint = (int)choice;
+    kent_build_derive(&b);
+    return b;
+}
+
+static const kent_holding *at_t(const kent_build *b, const kent_restraints *r)
+{
+    return &r->fittings[kent_build_fitting_of(b, "T")];
+}
+
+static void a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all(void **state)
+{
+    (void)state;
+    static const struct {
+        kent_role role;
+        kent_restraint_choice choice;
+        kent_joint joint;
+        bool held;
+        size_t legs;
+    } rows[] = {
+        {KENT_ROLE_TAPPING, KENT_RESTRAINED_JOINTS, KENT_PUSH_ON, false, 0},
+        {KENT_ROLE_TAPPING, KENT_THRUST_BLOCK, KENT_PUSH_ON, true, 0},
+        {KENT_ROLE_TAPPING, KENT_RESTRAINED_JOINTS, KENT_WELDED, true, 1},
+        {KENT_ROLE_NONE, KENT_RESTRAINED_JOINTS, KENT_PUSH_ON, true, 1},
+    };
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        kent_build b = main_with_branch(rows[i].role, rows[i].choice, rows[i].joint);
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        const kent_holding *h = at_t(&b, r);
+        assert_true(h->held == rows[i].held);
+        assert_int_equal(h->leg_count, rows[i].legs);
+        assert_true(kent_hand_says(h, "do not hold a tapping sleeve") == !h->held);
+        finish(&b, r);
+    }
+}
+
+static void a_sleeve_that_no_block_holds_is_offered_no_joints(void **state)
+{
+    (void)state;
+    kent_build b = main_with_branch(KENT_ROLE_TAPPING, KENT_THRUST_BLOCK, KENT_PUSH_ON);
+    b.model->fittings[kent_build_fitting_of(&b, "T")].cover = 0.3;
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = at_t(&b, r);
+    assert_false(h->held);
+    kent_hand_expect(h, "lay the main that deep, or a structure of its own");
+    assert_false(kent_hand_says(h, "or restrained joints"));
+    finish(&b, r);
+}
+
+static void beside_a_hydrant_the_drain_stays_free(void **state)
+{
+    (void)state;
+    for (int hydrant = 0; hydrant < 2; hydrant++) {
+        kent_build b = main_with_branch(hydrant ? KENT_ROLE_HYDRANT : KENT_ROLE_NONE,
+                                        KENT_THRUST_BLOCK, KENT_PUSH_ON);
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        assert_true(kent_hand_says(at_t(&b, r), "clear of the hydrant's drain") ==
+                    (hydrant > 0));
+        finish(&b, r);
+    }
+}
+
+/* ---- groups ---------------------------------------------------------------------- */
+
+/* Two bends of 45 degrees, 1.5 m apart and named as one, turn the main by 90 degrees:
+ * one block for p A sqrt(2), pushed along the outer bisector; a leg each way for all of
+ * it. */
+static void two_bends_as_one_get_one_block_for_the_sum(void **state)
+{
+    (void)state;
+    const double half = 1.5 * sqrt(0.5);
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "B", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "C", half, half, 50.0);
+    (void)kent_build_point(&b, "E", half, 200.0, 50.0);
+    (void)kent_build_pipe(&b, "P", "A B C E", 0.2, 1000.0);
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_outflow(&b, "E", 0.0);
+    (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    b.model->ground.water_table = (double)INFINITY;
+    const int note = kent_build_note(&b, "B");
+    b.model->together = kent_alloc(1, sizeof *b.model->together);
+    assert_non_null(b.model->together);
+    b.model->together[0] = 2;
+    b.model->together_count = 1;
+    b.model->notes[note].together_first = 0;
+    b.model->notes[note].together_count = 1;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const int f = kent_build_fitting_of(&b, "B");
+    const kent_holding *h = &r->fittings[f];
+    const double thrust = 1.0e6 * 0.25 * PI * 0.22 * 0.22 * sqrt(2.0);
+
+    assert_int_equal(b.model->fittings[f].type, KENT_GROUP);
+    assert_true(h->held);
+    assert_int_equal(h->block.type, KENT_BLOCK_BEARING);
+    assert_close(h->design_thrust, 1.5 * thrust, 1e-9);
+    assert_close(h->block.bearing_area, 1.5 * thrust / 150e3, 1e-9);
+    finish(&b, r);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(
+            a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius),
+        cmocka_unit_test(a_curve_that_cannot_be_judged_is_not_held),
+        cmocka_unit_test(every_line_of_a_curve_follows_from_those_above),
+        cmocka_unit_test(a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all),
+        cmocka_unit_test(a_sleeve_that_no_block_holds_is_offered_no_joints),
+        cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
+        cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
