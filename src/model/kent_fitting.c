@@ -20,6 +20,7 @@ typedef struct kent_site {
     kent_port *ports; /* [count] at most KENT_ARMS are kept */
     size_t count;
     kent_branch branch; /* end NONE: none */
+    bool curved;        /* the pipe follows an arc */
     bool schematic;     /* some leg has no coordinates */
     double deflection;  /* rad that the joints here take: the least of the legs' */
     bool rigid;         /* no leg's joint slips */
@@ -53,7 +54,9 @@ static bool type_fits(kent_fitting_type type, size_t count, size_t branches)
 
 static kent_restraint_choice usual_restraint(const kent_fitting *f, bool rigid)
 {
-    if (f->within_deflection || f->type == KENT_STRAIGHT) return KENT_NO_RESTRAINT;
+    if (f->within_deflection || f->type == KENT_STRAIGHT || f->type == KENT_CURVE) {
+        return KENT_NO_RESTRAINT;
+    }
     if (rigid) return KENT_RESTRAINED_JOINTS;
     return f->type == KENT_REDUCER || f->type == KENT_VALVE ? KENT_ANCHOR_BLOCK
                                                             : KENT_THRUST_BLOCK;
@@ -95,6 +98,7 @@ static void read_site(const kent_layout *l, kent_site *site)
 
     site->count = kent_layout_arms(m, l, site->point, arms);
     site->device = l->device[site->point];
+    site->curved = !isnan(m->points[site->point].curve_radius);
     site->deflection = (double)INFINITY;
     site->rigid = true;
     for (size_t i = 0; i < site->count && i < KENT_ARMS; i++) {
@@ -171,6 +175,7 @@ static int natural_type(const kent_site *site)
         const bool end = device != KENT_DEVICE_OUTFLOW || branch || hydrant;
         return end ? (int)KENT_DEAD_END : (int)NO_FITTING;
     }
+    if (site->curved) return KENT_CURVE; /* kent_curve_check saw to its legs */
     if (site->count == 2 && !branch) {
         if (!kent_ports_same_size(&site->ports[0], &site->ports[1])) {
             return KENT_REDUCER;
@@ -219,6 +224,13 @@ static int settle_type(const kent_site *site)
     int type = natural_type(site);
 
     if (!note) return type;
+    if (site->curved && (note->type >= 0 || note->branch.end != KENT_BRANCH_NONE)) {
+        kent_place_complain(m, note->place, site->complaints,
+                            "fitting at \"%s\": the pipe follows a curve there; leave "
+                            "type and branch out, or the point's curve_radius",
+                            id);
+        return NO_FITTING;
+    }
     if (note->type < 0) {
         if (type == NO_FITTING) {
             kent_place_complain(
@@ -262,15 +274,21 @@ static bool settle_directions(const kent_site *site, kent_fitting_type type)
     const bool extra = site->branch.end != KENT_BRANCH_NONE;
     const bool branches =
         extra || type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
+    const bool laid = site->m->points[site->point].laid_out;
     const char *wrong = NULL;
 
     if (!site->schematic) {
         if (says_angle) {
-            wrong = "angle is for points without x and y: here coordinates give it; "
-                    "leave it out";
+            wrong = laid ? "angle is for points without stations and turns: here they "
+                           "give it; leave it out"
+                         : "angle is for points without x and y: here coordinates give "
+                           "it; leave it out";
         } else if (says_way) {
-            wrong = "orientation is for points without x and y: here coordinates give "
-                    "it; leave it out";
+            wrong = laid
+                        ? "orientation is for points without stations and turns: here "
+                          "turn and z give it; leave it out"
+                        : "orientation is for points without x and y: here coordinates "
+                          "give it; leave it out";
         }
     } else if (type == KENT_BEND && !says_angle) {
         wrong = "a bend without x and y needs its angle";
@@ -304,7 +322,7 @@ static void describe_legs(kent_fitting *f, const kent_port *ports, size_t legs)
     f->outside_diameter = largest->outside_diameter;
     f->branch_size = (double)NAN;
     f->orientation = KENT_HORIZONTAL;
-    if (f->type == KENT_BEND) {
+    if (f->type == KENT_BEND || f->type == KENT_CURVE) {
         f->angle = kent_ports_turn(ports);
         f->plan_turn = kent_ports_plan_turn(ports);
         f->orientation = kent_ports_orientation(ports);
@@ -367,7 +385,9 @@ static void describe_ground(const kent_model *m, const kent_fitting_note *note,
 
 static void caution_turning(const kent_site *site, const kent_fitting *f)
 {
-    if (site->count != 2 || site->schematic || f->type == KENT_BEND) return;
+    if (site->count != 2 || site->schematic || site->curved || f->type == KENT_BEND) {
+        return;
+    }
     const double turn = kent_ports_turn(site->ports);
     if (turn <= fmax(KENT_LEAST_TURN, site->deflection)) return;
     kent_notes_add(&site->m->cautions,
@@ -430,6 +450,11 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
         if (site.count == 2) out->angle = branch_angle_of(&site);
         if (kent_branch_port(&site.branch, &ports[site.count])) out->port_count++;
         caution_cap(&site);
+    }
+    if (site.curved) {
+        out->curve_radius = m->points[point].curve_radius;
+        out->curve_length = l->arc[l->owner[point]];
+        kent_curve_caution(m, out, &m->pipes[l->pipe[l->owner[point]]]);
     }
     describe_ground(m, note, out);
     /* A bend named as one is a casting; one found by its small turn is a joint. */

@@ -1,7 +1,6 @@
 #include "kent_joining.h"
 
 #include <math.h>
-#include <stdio.h>
 
 #include "kent_said.h"
 

@@ -67,9 +67,10 @@ kent_status kent_layout_make(const kent_model *m, kent_layout *l)
     l->device = kent_alloc(m->point_count, sizeof *l->device);
     l->station = kent_alloc(m->point_count, sizeof *l->station);
     l->arm_node = kent_alloc(m->route_count, 2 * sizeof *l->arm_node);
+    l->arc = kent_alloc(m->route_count, sizeof *l->arc);
     l->arm_span = kent_alloc(m->route_count, 2 * sizeof *l->arm_span);
     if (!l->first || !l->stop || !l->pipe || !l->owner || !l->note || !l->device ||
-        !l->station || !l->arm_node || !l->arm_span) {
+        !l->station || !l->arm_node || !l->arm_span || !l->arc) {
         return KENT_E_NOMEM; /* the caller clears */
     }
     for (size_t a = 0; a < 2 * m->route_count; a++) {
@@ -91,6 +92,7 @@ void kent_layout_clear(kent_layout *l)
     free(l->station);
     free(l->arm_node);
     free(l->arm_span);
+    free(l->arc);
     *l = (kent_layout){0};
 }
 

@@ -47,6 +47,7 @@ kent_model *kent_model_new(void)
 
 static void clear_derived(kent_model *m)
 {
+    kent_alignment_forget(m);
     free(m->chainage);
     free(m->station);
     free(m->station_on);
@@ -146,11 +147,14 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     kent_layout layout = {0};
 
     clear_derived(m);
-    kent_status status = kent_route_measure(m, complaints);
+    kent_status status = kent_layout_make(m, &layout);
     if (status != KENT_OK) goto done;
-    status = kent_layout_make(m, &layout);
+    status = kent_alignment_lay(m, &layout, complaints);
+    if (status != KENT_OK || complaints->count > before) goto done;
+    status = kent_route_measure(m, &layout, complaints);
     if (status != KENT_OK) goto done;
     kent_layout_place_devices(m, &layout, complaints);
+    kent_curve_check(m, &layout, complaints);
     if (complaints->count > before) goto done; /* nothing beyond would make sense */
     status = kent_route_stations(m, &layout, complaints);
     if (status != KENT_OK) goto done;
@@ -162,6 +166,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     status = kent_network_check_connected(m, complaints);
     if (status != KENT_OK) goto done;
     status = kent_fitting_list(m, &layout, complaints);
+    if (status != KENT_OK) goto done;
+    status = kent_curve_joints(m, &layout, complaints);
     if (status != KENT_OK) goto done;
     status = kent_group_fittings(m, &layout, complaints);
     if (status != KENT_OK) goto done;

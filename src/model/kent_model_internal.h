@@ -41,6 +41,7 @@ typedef struct kent_layout {
     double *station;     /* [point_count] m; NAN: on no route */
     int *arm_node;       /* [2 route_count] -1: the pipe isn't cut there */
     int *arm_span;       /* [2 route_count] -1: no such arm */
+    double *arc;         /* [route_count] m along the curve at a stop; 0: none */
 } kent_layout;
 
 /* kent_layout.c */
@@ -63,10 +64,25 @@ static inline size_t kent_arm_number(kent_arm arm)
     return 2 * arm.stop + (arm.leaves ? 1U : 0U);
 }
 
-/* kent_route.c: the second needs the first and the layout. */
-kent_status kent_route_measure(kent_model *m, kent_complaints *complaints);
+/* kent_alignment.c: x and y of routes that have stations and turns instead. */
+kent_status kent_alignment_lay(kent_model *m, const kent_layout *l,
+                               kent_complaints *complaints);
+void kent_alignment_forget(kent_model *m); /* as the case was given */
+
+/* kent_route.c: the second needs the first. */
+kent_status kent_route_measure(kent_model *m, const kent_layout *l,
+                               kent_complaints *complaints);
 kent_status kent_route_stations(kent_model *m, const kent_layout *l,
                                 kent_complaints *complaints);
+
+/* 1: a pipe goes on from one listed before it that ends at its first point; -1: it is a
+ * branch there, which has stations of its own; else 0. */
+int kent_route_follows(const kent_model *m, const kent_layout *l,
+                       const kent_pipe *pipe);
+/* Of a stop of a pipe reached at the station `here`, m, after `before`. */
+void kent_route_complain_falling(const kent_model *m, const kent_pipe *pipe,
+                                 size_t stop, double before, double here,
+                                 kent_complaints *complaints);
 
 /* kent_ground.c: zones sorted, and held against their pipes; levels of the ground
  * against those of the pipes. Needs stations. */
@@ -134,6 +150,17 @@ bool kent_branch_port(const kent_branch *branch, kent_port *out);
 /* kent_fitting_list.c: all of them, in the order of kent_model.fittings; notes go to
  * their points. */
 kent_status kent_fitting_list(kent_model *m, kent_layout *l,
+                              kent_complaints *complaints);
+
+/* kent_curve.c: where a curve cannot be; the chainages of a surveyed pipe, along its
+ * tangents, made those along its arcs (false with a complaint); what a curve asks of
+ * the joints; then turns within joint deflection summed. */
+void kent_curve_check(const kent_model *m, const kent_layout *l,
+                      kent_complaints *complaints);
+bool kent_curve_follow(const kent_model *m, const kent_layout *l, const kent_pipe *pipe,
+                       kent_complaints *complaints);
+void kent_curve_caution(kent_model *m, const kent_fitting *f, const kent_pipe *pipe);
+kent_status kent_curve_joints(kent_model *m, const kent_layout *l,
                               kent_complaints *complaints);
 
 /* kent_group.c: fittings held as one, because the case says so or because they stand

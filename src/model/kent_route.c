@@ -29,13 +29,14 @@ static void measure_without_plan(kent_model *m, const kent_pipe *pipe,
     if (pipe->route_count > 2) {
         kent_place_complain(m, pipe->place, complaints,
                             "pipe \"%s\" runs through %zu points, not all with x and "
-                            "y; give them, or write one pipe with its length between "
-                            "each two",
+                            "y; give all x and y, or none and a station at each (with "
+                            "turn where it turns), or write one pipe with its length "
+                            "between each two",
                             pipe->id, pipe->route_count);
     } else if (isnan(pipe->length)) {
         kent_place_complain(m, pipe->place, complaints,
-                            "pipe \"%s\" has no length; give length, or x and y of "
-                            "both its points",
+                            "pipe \"%s\" has no length; give length, or x and y, or "
+                            "stations, of both its points",
                             pipe->id);
     } else {
         m->chainage[pipe->route_first + 1] = pipe->length;
@@ -43,7 +44,7 @@ static void measure_without_plan(kent_model *m, const kent_pipe *pipe,
 }
 
 /* Equation 5.1: lengths in space, stretched to the given length where there is one. */
-static void measure_surveyed(kent_model *m, const kent_pipe *pipe,
+static void measure_surveyed(kent_model *m, const kent_layout *l, const kent_pipe *pipe,
                              kent_complaints *complaints)
 {
     double *chainage = m->chainage + pipe->route_first;
@@ -61,6 +62,7 @@ static void measure_surveyed(kent_model *m, const kent_pipe *pipe,
         }
         chainage[k] = chainage[k - 1] + leg;
     }
+    if (!kent_curve_follow(m, l, pipe, complaints)) return;
     if (isnan(pipe->length)) return;
 
     const double survey = chainage[pipe->route_count - 1];
@@ -118,7 +120,8 @@ static bool is_sound(const kent_model *m, const kent_pipe *pipe,
     return true;
 }
 
-kent_status kent_route_measure(kent_model *m, kent_complaints *complaints)
+kent_status kent_route_measure(kent_model *m, const kent_layout *l,
+                               kent_complaints *complaints)
 {
     m->chainage = kent_alloc(m->route_count, sizeof *m->chainage);
     if (!m->chainage) return KENT_E_NOMEM;
@@ -126,7 +129,7 @@ kent_status kent_route_measure(kent_model *m, kent_complaints *complaints)
         const kent_pipe *pipe = &m->pipes[i];
         if (!is_sound(m, pipe, complaints)) continue;
         if (is_surveyed(m, pipe)) {
-            measure_surveyed(m, pipe, complaints);
+            measure_surveyed(m, l, pipe, complaints);
         } else {
             measure_without_plan(m, pipe, complaints);
         }
@@ -139,9 +142,7 @@ static const kent_point *point_of(const kent_model *m, size_t stop)
     return &m->points[m->route[stop]];
 }
 
-/* Whether a pipe goes on from one listed before it that ends at its first point; -1
- * where it is a branch there, which has stations of its own. */
-static int follows(const kent_model *m, const kent_layout *l, const kent_pipe *pipe)
+int kent_route_follows(const kent_model *m, const kent_layout *l, const kent_pipe *pipe)
 {
     const int start = m->route[pipe->route_first];
     bool ended = false;
@@ -162,7 +163,7 @@ static double start_station(const kent_model *m, const kent_layout *l,
                             const kent_pipe *pipe)
 {
     const kent_point *start = point_of(m, pipe->route_first);
-    const int how = follows(m, l, pipe);
+    const int how = kent_route_follows(m, l, pipe);
     if (how > 0 && !isnan(start->station_ahead)) return start->station_ahead;
     if (how >= 0 && !isnan(start->station)) return start->station;
     if (how > 0) return l->station[m->route[pipe->route_first]];
@@ -175,8 +176,9 @@ static double start_station(const kent_model *m, const kent_layout *l,
     return 0.0;
 }
 
-static void complain_falling(const kent_model *m, const kent_pipe *pipe, size_t stop,
-                             double before, double here, kent_complaints *complaints)
+void kent_route_complain_falling(const kent_model *m, const kent_pipe *pipe,
+                                 size_t stop, double before, double here,
+                                 kent_complaints *complaints)
 {
     const kent_point *point = point_of(m, stop);
     kent_place_complain(m, point->place, complaints,
@@ -206,7 +208,7 @@ static void count_stations(const kent_model *m, const kent_layout *l,
             const bool drop =
                 m->points[point].at.z != m->points[m->route[stop - 1]].at.z;
             if (here < before || (here == before && !drop)) {
-                complain_falling(m, pipe, stop, before, here, complaints);
+                kent_route_complain_falling(m, pipe, stop, before, here, complaints);
             }
         }
         m->station[stop] = m->station_on[stop] = here;
