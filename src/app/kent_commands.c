@@ -353,9 +353,17 @@ static kent_exit command_catalogue(session *s)
     kent_exit code = read_catalogue(s);
     if (code) return code;
     const kent_report_options o = report_options(s);
-    const kent_status status = kent_report_catalogue(s->catalogue, s->options->subject,
-                                                     &o, kent_output_gather(&text));
+    const kent_choice choice = {s->options->subject, s->options->words,
+                                s->options->word_count};
+    size_t rows = 0;
+    const kent_status status = kent_report_catalogue(s->catalogue, &choice, &o,
+                                                     kent_output_gather(&text), &rows);
     code = print_report(s, status, &text);
+    if (!code && rows == 0 && choice.word_count > 0) {
+        (void)fprintf(stderr, "kentledge: no row of %s has %s\n", choice.part,
+                      choice.word_count > 1 ? "all of these words" : "this word");
+        code = KENT_EXIT_FAILED;
+    }
     kent_text_clear(&text);
     return code;
 }

@@ -40,8 +40,8 @@ static const command_row COMMANDS[] = {
      GAVE_UNITS | GAVE_WIDE | GAVE_QUIET | GAVE_KEYS},
     {"explain", "a CASE and a FITTING", 2, 2, KENT_EXPLAIN,
      GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
-    {"catalogue", "at most one word", 0, 1, KENT_CATALOGUE_LIST,
-     GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
+    {"catalogue", "a part and at most 8 words", 0, 1 + KENT_OPTIONS_WORDS,
+     KENT_CATALOGUE_LIST, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
 };
 enum { COMMAND_COUNT = sizeof COMMANDS / sizeof COMMANDS[0] };
 
@@ -53,11 +53,12 @@ enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 static const char *const PARTS[] = {"pipes", "soils", "valves", "rules", "materials"};
 enum { PART_COUNT = sizeof PARTS / sizeof PARTS[0] };
 
-static const char ARGUMENTS[] = "run CASE\n"
-                                "check CASE\n"
-                                "check --keys\n"
-                                "explain CASE FITTING\n"
-                                "catalogue [pipes|materials|valves|soils|rules]";
+static const char ARGUMENTS[] =
+    "run CASE\n"
+    "check CASE\n"
+    "check --keys\n"
+    "explain CASE FITTING\n"
+    "catalogue [pipes|materials|valves|soils|rules [WORD...]]";
 
 static const char DOCUMENT[] =
     "Restraint of buried pressure mains: thrust blocks and restrained lengths, from "
@@ -69,7 +70,9 @@ static const char DOCUMENT[] =
     "check      what was understood of a case: points, pipes, fittings, values "
     "assumed\n"
     "explain    the numbers of one fitting as a hand calculation\n"
-    "catalogue  what config/ offers, each row with its source\n"
+    "catalogue  what config/ offers, each row with its source; of one part the rows "
+    "that "
+    "have every WORD\n"
     "\n"
     "CASE is a case file, - standard input. Results go to standard output, everything "
     "else to standard error. Exit status: 0 done; 1 could not be done; 2 bad input or "
@@ -105,7 +108,7 @@ static const struct argp_option OPTIONS[] = {
 
 typedef struct reading {
     kent_options *options;
-    const char *words[3]; /* command and what follows it */
+    const char *words[2 + KENT_OPTIONS_WORDS]; /* command and what follows it */
     size_t word_count;
     unsigned gave;
     bool failed; /* no memory */
@@ -233,6 +236,9 @@ static void finish(struct argp_state *state, reading *r)
     r->options->command = c->command;
     if (after > 0) r->options->subject = r->words[1];
     if (after > 1) r->options->fitting = r->words[2];
+    for (size_t i = 2; i < r->word_count; i++) {
+        r->options->words[r->options->word_count++] = r->words[i];
+    }
     if (c->command != KENT_CATALOGUE_LIST || after == 0) return;
     if (strcmp(r->words[1], "pumps") == 0) {
         argp_error(state, "'catalogue pumps' is not in this version");
@@ -305,7 +311,8 @@ static error_t read_key(int key, char *text, struct argp_state *state)
         (void)printf("kentledge %s\n", KENT_VERSION);
         exit(KENT_EXIT_DONE);
     case ARGP_KEY_ARG:
-        if (r->word_count == 3) argp_error(state, "'%s' is one word too many", text);
+        if (r->word_count == 2 + KENT_OPTIONS_WORDS)
+            argp_error(state, "'%s' is one word too many", text);
         r->words[r->word_count++] = text;
         return 0;
     case ARGP_KEY_END:

@@ -44,8 +44,18 @@ kent_status kent_report_keys(kent_sink sink);
 kent_status kent_report_explain(const kent_results *r, int fitting,
                                 const kent_report_options *o, kent_sink sink);
 
-/* `catalogue`: what is NULL or "pipes", "soils", "valves", "rules", "materials". */
-kent_status kent_report_catalogue(const kent_catalogue *c, const char *what,
-                                  const kent_report_options *o, kent_sink sink);
+/* Which rows of the catalogue: part is NULL for all or "pipes", "soils", "valves",
+ * "rules", "materials"; every word must occur, in any case of letters, in a row's id,
+ * material, standard, source or status. */
+typedef struct kent_choice {
+    const char *part;
+    const char *const *words; /* [word_count] */
+    size_t word_count;
+} kent_choice;
+
+/* `catalogue`; *rows: how many were listed. A part without any is left out. */
+kent_status kent_report_catalogue(const kent_catalogue *c, const kent_choice *choice,
+                                  const kent_report_options *o, kent_sink sink,
+                                  size_t *rows);
 
 #endif

@@ -2,16 +2,35 @@
 #include "kent_sink.h"
 #include "kent_table.h"
 
+#include <math.h>
 #include <string.h>
 
 /* What the parts of one listing share. */
 typedef struct kent_listing {
     const kent_catalogue *catalogue;
+    const kent_choice *choice;
+    size_t *rows; /* listed so far */
     kent_system units;
     size_t limit;        /* columns of a line; 0: none */
     kent_notes *sources; /* of the part being listed, in order of first mention */
     kent_text *out;
 } kent_listing;
+
+/* Whether a row is asked for by its words; counts it then. */
+static bool wanted(const kent_listing *l, const char *id, const char *material,
+                   const char *standard, const char *source, const char *status)
+{
+    const char *const texts[] = {id, material, standard, source, status};
+    for (size_t i = 0; i < l->choice->word_count; i++) {
+        bool found = false;
+        for (size_t k = 0; k < sizeof texts / sizeof texts[0]; k++) {
+            found = found || strcasestr(texts[k], l->choice->words[i]) != NULL;
+        }
+        if (!found) return false;
+    }
+    ++*l->rows;
+    return true;
+}
 
 static void quantity(const kent_listing *l, kent_table *t, kent_kind kind, double si)
 {
@@ -60,6 +79,10 @@ static void print_sources(const kent_listing *l)
 
 static void finish(const kent_listing *l, const char *heading, kent_table *t)
 {
+    if (t->cell_count == 0) { /* no row is asked for */
+        kent_table_clear(t);
+        return;
+    }
     kent_text_add(l->out, "%s%s\n", l->out->length > 0 ? "\n" : "", heading);
     (void)kent_table_print(t, l->limit, l->out);
     kent_table_clear(t);
@@ -77,7 +100,9 @@ static void list_pipes(const kent_listing *l)
         {"wall", mm.text, KENT_ALIGN_RIGHT, false},
         {"least", mm.text, KENT_ALIGN_RIGHT, false},
         {"lining", mm.text, KENT_ALIGN_RIGHT, false},
-        {"rating", bar.text, KENT_ALIGN_RIGHT, false},
+        {"service", bar.text, KENT_ALIGN_RIGHT, false},
+        {"surge", bar.text, KENT_ALIGN_RIGHT, false},
+        {"test", bar.text, KENT_ALIGN_RIGHT, false},
         {"status", "", KENT_ALIGN_LEFT, false},
         {"source", "", KENT_ALIGN_LEFT, false},
     };
@@ -85,16 +110,33 @@ static void list_pipes(const kent_listing *l)
                     .column_count = sizeof columns / sizeof columns[0]};
     for (size_t i = 0; i < l->catalogue->pipe_count; i++) {
         const kent_pipe_class *p = &l->catalogue->pipes[i];
+        if (!wanted(l, p->id, p->material, p->standard, p->from.source,
+                    p->from.status)) {
+            continue;
+        }
         kent_table_cell(&t, "%s", p->id);
         kent_table_cell(&t, "%s", p->material);
         wall(l, &t, p->outside_diameter);
         wall(l, &t, p->wall);
         wall(l, &t, p->wall_minimum);
-        wall(l, &t, p->lining);
+        wall(l, &t, p->lining > 0.0 ? p->lining : NAN);
         quantity(l, &t, KENT_PRESSURE, p->pressure_rating);
+        quantity(l, &t, KENT_PRESSURE, p->surge_rating);
+        quantity(l, &t, KENT_PRESSURE, p->test_rating);
         origin(l, &t, &p->from);
     }
-    finish(l, "Pipes", &t);
+    finish(l,
+           "Pipes: walls nominal and least, pressures rated in service, with surge now "
+           "and then, under test",
+           &t);
+}
+
+/* "70 °C": above it the material is not for use; a dash where nothing is known. */
+static void warmest(const kent_listing *l, kent_table *t, const kent_material *m)
+{
+    quantity(l, t, KENT_TEMPERATURE,
+             m->derating_count > 0 ? m->derating[m->derating_count - 1].temperature
+                                   : NAN);
 }
 
 static void list_materials(const kent_listing *l)
@@ -102,6 +144,7 @@ static void list_materials(const kent_listing *l)
     const kent_shown gpa = kent_shown_unit(KENT_MODULUS, l->units);
     const kent_shown mm = kent_shown_unit(KENT_DIAMETER, l->units);
     const kent_shown density = kent_shown_unit(KENT_DENSITY, l->units);
+    const kent_shown degree = kent_shown_unit(KENT_TEMPERATURE, l->units);
     const kent_column columns[] = {
         {"material", "", KENT_ALIGN_LEFT, false},
         {"modulus", gpa.text, KENT_ALIGN_RIGHT, false},
@@ -109,6 +152,8 @@ static void list_materials(const kent_listing *l)
         {"density", density.text, KENT_ALIGN_RIGHT, false},
         {"roughness", mm.text, KENT_ALIGN_RIGHT, false},
         {"lining", gpa.text, KENT_ALIGN_RIGHT, false},
+        {"creep", "elements", KENT_ALIGN_RIGHT, false},
+        {"warmest", degree.text, KENT_ALIGN_RIGHT, false},
         {"status", "", KENT_ALIGN_LEFT, false},
         {"source", "", KENT_ALIGN_LEFT, false},
     };
@@ -116,6 +161,7 @@ static void list_materials(const kent_listing *l)
                     .column_count = sizeof columns / sizeof columns[0]};
     for (size_t i = 0; i < l->catalogue->material_count; i++) {
         const kent_material *m = &l->catalogue->materials[i];
+        if (!wanted(l, m->id, "", "", m->from.source, m->from.status)) continue;
         kent_table_cell(&t, "%s", m->id);
         quantity(l, &t, KENT_MODULUS, m->modulus);
         number(&t, m->poisson, 2);
@@ -123,6 +169,8 @@ static void list_materials(const kent_listing *l)
         number(&t, kent_units_shown(KENT_DIAMETER, l->units, m->roughness), 4);
         quantity(l, &t, KENT_MODULUS,
                  m->lining_modulus > 0.0 ? m->lining_modulus : NAN);
+        kent_table_cell(&t, "%zu", m->creep_count);
+        warmest(l, &t, m);
         origin(l, &t, &m->from);
     }
     finish(l, "Materials", &t);
@@ -146,6 +194,7 @@ static void list_valves(const kent_listing *l)
                     .column_count = sizeof columns / sizeof columns[0]};
     for (size_t i = 0; i < l->catalogue->valve_count; i++) {
         const kent_valve_type *v = &l->catalogue->valves[i];
+        if (!wanted(l, v->id, "", "", v->from.source, v->from.status)) continue;
         const bool known = v->curve.count > 0; /* else fully open only */
         kent_table_cell(&t, "%s", v->id);
         number(&t, v->loss, 2);
@@ -160,18 +209,47 @@ static void list_valves(const kent_listing *l)
     finish(l, "Valves: capacity E against opening, relative to full opening", &t);
 }
 
+/* How the bearing is known: "191.5", "48.0 at 0.75 to 97.0 at 1.50 m", "23.6 per m",
+ * "0.50 of the passive". */
+static void bearing(const kent_listing *l, kent_table *t, const kent_soil *s)
+{
+    const kent_shown m = kent_shown_unit(KENT_LENGTH, l->units);
+    const double depth = kent_units_display(KENT_LENGTH, l->units).factor; /* per m */
+    switch (s->route) {
+    case KENT_BEARING_CONSTANT:
+        quantity(l, t, KENT_STRESS, s->allowable_bearing);
+        return;
+    case KENT_BEARING_BY_DEPTH: {
+        const kent_depth_row *last = &s->by_depth[s->by_depth_count - 1];
+        kent_table_cell(
+            t, "%s at %s to %s at %s %s",
+            kent_shown_quantity(KENT_STRESS, l->units, s->by_depth[0].bearing).text,
+            kent_shown_quantity(KENT_LENGTH, l->units, s->by_depth[0].depth).text,
+            kent_shown_quantity(KENT_STRESS, l->units, last->bearing).text,
+            kent_shown_quantity(KENT_LENGTH, l->units, last->depth).text, m.text);
+        return;
+    }
+    case KENT_BEARING_GRADIENT:
+        kent_table_cell(
+            t, "%s per %s",
+            kent_shown_quantity(KENT_STRESS, l->units, s->bearing_gradient / depth)
+                .text,
+            m.text);
+        return;
+    case KENT_BEARING_PASSIVE:
+        kent_table_cell(t, "%.2f of the passive", s->passive_share);
+        return;
+    }
+}
+
 static void list_soils(const kent_listing *l)
 {
     const kent_shown kpa = kent_shown_unit(KENT_STRESS, l->units);
-    const kent_shown weight = kent_shown_unit(KENT_UNIT_WEIGHT, l->units);
     const kent_column columns[] = {
         {"soil", "", KENT_ALIGN_LEFT, false},
-        {"bearing", kpa.text, KENT_ALIGN_RIGHT, false},
+        {"bearing", kpa.text, KENT_ALIGN_LEFT, false},
         {"factor", "inside", KENT_ALIGN_RIGHT, false},
-        {"base", kpa.text, KENT_ALIGN_RIGHT, false},
-        {"weight", weight.text, KENT_ALIGN_RIGHT, false},
-        {"angle", "°", KENT_ALIGN_RIGHT, false},
-        {"cohesion", kpa.text, KENT_ALIGN_RIGHT, false},
+        {"friction", "concrete", KENT_ALIGN_RIGHT, false},
         {"relied on", "", KENT_ALIGN_LEFT, false},
         {"source", "", KENT_ALIGN_LEFT, false},
     };
@@ -179,27 +257,33 @@ static void list_soils(const kent_listing *l)
                     .column_count = sizeof columns / sizeof columns[0]};
     for (size_t i = 0; i < l->catalogue->soil_count; i++) {
         const kent_soil *s = &l->catalogue->soils[i];
+        if (!wanted(l, s->id, "", "", s->source, "")) continue;
         kent_table_cell(&t, "%s", s->id);
-        quantity(l, &t, KENT_STRESS, s->allowable_bearing);
+        bearing(l, &t, s);
         number(&t, s->factor_inside, 2);
-        quantity(l, &t, KENT_STRESS, s->vertical_bearing);
-        quantity(l, &t, KENT_UNIT_WEIGHT, s->unit_weight);
-        quantity(l, &t, KENT_ANGLE, s->friction_angle);
-        quantity(l, &t, KENT_STRESS, s->cohesion);
+        number(&t, s->base_friction, 2);
         kent_table_cell(&t, "%s", s->unreliable ? "no" : "yes");
         source(l, &t, s->source);
     }
-    finish(l, "Soils", &t);
+    finish(l, "Soils: allowable horizontal bearing", &t);
 }
 
 /* Sets of rules have too many values for a row: one paragraph each. */
 static void list_rules(const kent_listing *l)
 {
-    kent_text_add(l->out, "%sDesign rules\n", l->out->length > 0 ? "\n" : "");
+    size_t listed = 0;
     for (size_t i = 0; i < l->catalogue->rule_count; i++) {
         const kent_rules *r = &l->catalogue->rules[i];
         kent_text words = {0};
-        kent_text_add(&words, "%s: safety factor %.2f; ", r->id, r->safety_factor);
+        if (!wanted(l, r->id, "", "", r->source, "")) continue;
+        if (listed++ == 0) {
+            kent_text_add(l->out, "%sDesign rules\n", l->out->length > 0 ? "\n" : "");
+        }
+        kent_text_add(&words, "%s: safety factor %.2f", r->id, r->safety_factor);
+        if (!isnan(r->factor_test)) {
+            kent_text_add(&words, ", under test %.2f", r->factor_test);
+        }
+        kent_text_add(&words, "; ");
         kent_text_add(&words, "height at most %.2f of the depth of its base; ",
                       r->height_to_depth);
         kent_text_add(&words, "width %.2f to %.2f heights; ", r->width_to_height[0],
@@ -234,8 +318,9 @@ static void list_rules(const kent_listing *l)
     }
 }
 
-kent_status kent_report_catalogue(const kent_catalogue *c, const char *what,
-                                  const kent_report_options *o, kent_sink sink)
+kent_status kent_report_catalogue(const kent_catalogue *c, const kent_choice *choice,
+                                  const kent_report_options *o, kent_sink sink,
+                                  size_t *rows)
 {
     static const struct {
         const char *word;
@@ -248,12 +333,16 @@ kent_status kent_report_catalogue(const kent_catalogue *c, const char *what,
     kent_text out = {0};
     kent_notes sources = {0};
     const kent_listing l = {.catalogue = c,
+                            .choice = choice,
+                            .rows = rows,
                             .units = o->units,
                             .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
                             .sources = &sources,
                             .out = &out};
+    *rows = 0;
     for (size_t i = 0; i < sizeof PARTS / sizeof PARTS[0]; i++) {
-        if (!what || strcmp(what, PARTS[i].word) == 0) PARTS[i].list(&l);
+        if (!choice->part || strcmp(choice->part, PARTS[i].word) == 0)
+            PARTS[i].list(&l);
     }
     const kent_status status = kent_sink_flush(sink, &out);
     kent_notes_clear(&sources);

@@ -97,6 +97,16 @@ class App(unittest.TestCase):
         self.assertEqual(a.stdout, b.stdout)
         self.assertNotIn("pipe_class", a.stdout)
 
+    def test_words_choose_rows_of_the_catalogue(self):
+        r = self.call("catalogue", "pipes", "C900", "12in", "--units", "US")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        self.assertIn("PVC-C900-DR18-12in", r.stdout)
+        self.assertNotIn("DN300", r.stdout)
+        r = self.call("catalogue", "pipes", "C900", "13in")
+        self.assertEqual((r.returncode, r.stdout), (1, ""))
+        self.assertIn("no row of pipes has all of these words", r.stderr)
+        self.assertEqual(self.call("catalogue", "soils", *"abcdefghi").returncode, 2)
+
     def test_two_dashes_end_the_options(self):
         shutil.copy(self.dir / "main.cfg", self.dir / "--wide.cfg")
         self.assertEqual(self.call("check", "--", "--wide.cfg").returncode, 0)

@@ -584,8 +584,13 @@ static void the_catalogue_lists_each_row_with_its_source(void **state)
     for (kent_system units = KENT_SI; units <= KENT_US; units++) {
         const kent_report_options o = {.units = units};
         kent_text out = {0};
-        assert_int_equal(kent_report_catalogue(c, NULL, &o, kent_mixed_sink(&out)),
-                         KENT_OK);
+        const kent_choice all = {0};
+        const kent_choice soils = {.part = "soils"};
+        size_t rows = 0;
+        assert_int_equal(
+            kent_report_catalogue(c, &all, &o, kent_mixed_sink(&out), &rows), KENT_OK);
+        assert_int_equal(rows, c->pipe_count + c->material_count + c->valve_count +
+                                   c->soil_count + c->rule_count);
         const char *text = kent_text_of(&out);
         assert_narrow(text);
         for (size_t i = 0; i < c->pipe_count; i++) {
@@ -599,9 +604,51 @@ static void the_catalogue_lists_each_row_with_its_source(void **state)
         }
         assert_contains(text, "[1] ");
         kent_text_reset(&out);
-        assert_int_equal(kent_report_catalogue(c, "soils", &o, kent_mixed_sink(&out)),
-                         KENT_OK);
+        assert_int_equal(
+            kent_report_catalogue(c, &soils, &o, kent_mixed_sink(&out), &rows),
+            KENT_OK);
+        assert_int_equal(rows, c->soil_count);
         assert_null(strstr(kent_text_of(&out), c->pipes[0].id));
+        kent_text_clear(&out);
+    }
+    kent_catalogue_free(c);
+}
+
+static void words_choose_rows_of_the_catalogue(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *part;
+        const char *words[3];
+        size_t word_count, rows;
+        const char *holds;
+    } ROWS[] = {{"pipes", {"C900", "12in"}, 2, 3, "PVC-C900-DR25-12in"},
+                {"pipes", {"c900", "dr18", "8IN"}, 3, 2, "PVC-C900-DR18-18in"},
+                {"pipes", {"EN 545", "DN600"}, 2, 5, "DI-EN545-C100-DN600"},
+                {"soils", {"usda"}, 1, 4, "1200"},
+                {"soils", {"building code", "sand-"}, 2, 1, "sand-SP-by-gradient-IBC"},
+                {"valves", {"weisbach"}, 1, 3, "gate-circular"},
+                {"rules", {"test"}, 1, 1, "under test 1.13"},
+                {"materials", {"plastic"}, 1, 0, ""},
+                {NULL, {"derived"}, 1, 90 + 3 + 1, "Renton"}};
+    kent_catalogue *c = NULL;
+    kent_complaints complaints = {0};
+    kent_error err = {0};
+    const kent_report_options o = {.units = KENT_US};
+    assert_int_equal(
+        kent_catalogue_read(KENT_SOURCE_DIR "/config", &c, &complaints, &err), KENT_OK);
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        const kent_choice choice = {ROWS[i].part, ROWS[i].words, ROWS[i].word_count};
+        kent_text out = {0};
+        size_t rows = 0;
+        assert_int_equal(
+            kent_report_catalogue(c, &choice, &o, kent_mixed_sink(&out), &rows),
+            KENT_OK);
+        if (rows != ROWS[i].rows) print_error("%zu: %s\n", i, kent_text_of(&out));
+        assert_int_equal(rows, ROWS[i].rows);
+        assert_contains(kent_text_of(&out), ROWS[i].holds);
+        assert_narrow(kent_text_of(&out));
+        assert_int_equal(out.length > 0, rows > 0);
         kent_text_clear(&out);
     }
     kent_catalogue_free(c);
@@ -626,6 +673,7 @@ int main(void)
         cmocka_unit_test(a_profile_runs_along_every_pipe_without_a_step_back),
         cmocka_unit_test(a_sink_that_is_full_makes_every_report_fail),
         cmocka_unit_test(the_catalogue_lists_each_row_with_its_source),
+        cmocka_unit_test(words_choose_rows_of_the_catalogue),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
