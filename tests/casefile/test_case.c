@@ -316,6 +316,75 @@ static void what_is_stated_is_not_noted_as_assumed(void **state)
     kent_catalogue_free(c);
 }
 
+static void joints_and_supports_are_assumed_only_unsaid(void **state)
+{
+    (void)state;
+    static const char JOINT[] = "joint of pipes that name none";
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_sound(c, SOUND_CASE);
+    assert_null(assumed(m, JOINT));
+    kent_model_free(m);
+    m = read_worded(c, "joint = \"push-on\";", "%s", " ");
+    assert_int_equal(m->pipes[0].joint, KENT_PUSH_ON);
+    assert_non_null(assumed(m, JOINT));
+    kent_model_free(m);
+    /* the first of the words, against what the joint would give */
+    m = read_worded(c, "joint = \"push-on\";",
+                    "joint = \"welded\"; axial_support = \"%s\";", "flexible-joints");
+    assert_int_equal(m->pipes[0].axial_support, KENT_FLEXIBLE_JOINTS);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_valve_without_a_type_is_linear_and_says_so(void **state)
+{
+    (void)state;
+    static const char TYPE[] = "type of valves that name none";
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = read_worded(c, "type = \"butterfly\";", "%s", " ");
+    assert_string_equal(m->valves[0].type, "linear");
+    assert_non_null(assumed(m, TYPE));
+    kent_model_free(m);
+    m = read_worded(c, "type = \"butterfly\";", "type = \"%s\";", "linear");
+    assert_string_equal(m->valves[0].type, "linear");
+    assert_null(assumed(m, TYPE));
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_pipe_that_cannot_be_worked_out_is_refused(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys, *what;
+    } ROWS[] = {
+        {"outside_diameter = \"326 mm\"; wave_speed = \"1100 m/s\"; roughness = \"0.1 "
+         "mm\";",
+         "pipe \"A\": its diameters are not known; give pipe_class, or "
+         "outside_diameter "
+         "with wall_thickness or inside_diameter"},
+        {"outside_diameter = \"326 mm\"; inside_diameter = \"300 mm\"; roughness = "
+         "\"0.1 "
+         "mm\"; elastic_modulus = \"170 GPa\";",
+         "pipe \"A\": its wave speed cannot be computed; give material, or "
+         "elastic_modulus and poisson_ratio, or wave_speed"},
+        {"outside_diameter = \"300 mm\"; inside_diameter = \"300 mm\"; wave_speed = "
+         "\"1100 "
+         "m/s\"; roughness = \"0.1 mm\";",
+         "pipe \"A\": its diameters do not fit: 300 mm outside, 300 mm inside, lining "
+         "0 mm "
+         "leave no wall"},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text =
+            replaced(SOUND_CASE, "pipe_class = \"DI-EN545-C40-DN300\";", ROWS[i].keys);
+        assert_refused_at(c, text, 8, ROWS[i].what);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
 static void a_case_may_override_single_design_rules(void **state)
 {
     (void)state;
@@ -521,6 +590,9 @@ int main(void)
         cmocka_unit_test(each_law_of_friction_is_read_with_its_number),
         cmocka_unit_test(each_way_to_state_a_valve_gives_its_capacity),
         cmocka_unit_test(what_is_stated_is_not_noted_as_assumed),
+        cmocka_unit_test(joints_and_supports_are_assumed_only_unsaid),
+        cmocka_unit_test(a_valve_without_a_type_is_linear_and_says_so),
+        cmocka_unit_test(a_pipe_that_cannot_be_worked_out_is_refused),
         cmocka_unit_test(a_case_may_override_single_design_rules),
         cmocka_unit_test(a_case_in_US_units_has_blocks_in_whole_inches),
         cmocka_unit_test(a_soil_may_start_from_a_row_of_the_catalogue),
