@@ -66,15 +66,52 @@ static double axis_of(kent_vec3 v, int axis)
     return axis == 0 ? v.x : axis == 1 ? v.y : v.z;
 }
 
+/* Whether legs leave from points of their own: several fittings held as one. */
+static bool spread(const kent_sheet *s) { return s->fitting->member_count > 1; }
+
+/* A leg without a pipe has the direction that the case states. */
+static void derive_stated_leg(const kent_port *p, int n, kent_derivation *d)
+{
+    static const char AXES[] = "xyz";
+    char says[160];
+
+    (void)snprintf(says, sizeof says, "Leg %d, %s", n,
+                   p->kind == KENT_PORT_OUTLET ? "open to the air" : "the dead branch");
+    kent_derivation_heading(d, says);
+    for (int a = 0; a < 3; a++) {
+        kent_derivation_put(d, symbol("n_%d%c", n, AXES[a]).text,
+                            axis_of(p->direction, a), KENT_RATIO, KENT_GIVEN,
+                            "direction out of the fitting");
+    }
+}
+
+static void derive_start(const kent_point *from, kent_derivation *d)
+{
+    static const char AXES[] = "xyz";
+    char says[160];
+
+    for (int a = 0; a < 3; a++) {
+        (void)snprintf(says, sizeof says, "%c of %s", AXES[a], from->id);
+        kent_derivation_put(d, symbol("%c0", AXES[a]).text, axis_of(from->at, a),
+                            KENT_LENGTH, KENT_GIVEN, says);
+    }
+}
+
 /* Direction of one leg out of the coordinates of its two points. */
 static void derive_leg(const kent_sheet *s, size_t port, kent_derivation *d)
 {
     static const char AXES[] = "xyz";
     const kent_port *p = &s->model->ports[s->fitting->port_first + port];
-    const kent_point *to = &s->model->points[p->toward];
-    const kent_vec3 step = kent_vec3_sub(to->at, s->fitting->at);
-    const int n = (int)port + 1;
+    const int n = (int)port + 1, start = kent_port_point(s->model, s->fitting, p);
     char formula[160], says[160];
+
+    if (p->kind != KENT_PORT_SPAN) {
+        derive_stated_leg(p, n, d);
+        return;
+    }
+    const kent_point *to = &s->model->points[p->toward];
+    const kent_point *from = &s->model->points[start];
+    const kent_vec3 step = kent_vec3_sub(to->at, from->at);
 
     (void)snprintf(says, sizeof says, "Leg %d, towards %s", n, to->id);
     kent_derivation_heading(d, says);
@@ -83,6 +120,7 @@ static void derive_leg(const kent_sheet *s, size_t port, kent_derivation *d)
         kent_derivation_put(d, symbol("%c%d", AXES[a], n).text, axis_of(to->at, a),
                             KENT_LENGTH, KENT_GIVEN, says);
     }
+    if (spread(s)) derive_start(from, d);
     (void)snprintf(formula, sizeof formula, "sqrt((x%d-x0)^2+(y%d-y0)^2+(z%d-z0)^2)", n,
                    n, n);
     kent_derivation_work(d, symbol("L%d", n).text, kent_vec3_length(step), KENT_LENGTH,
@@ -125,7 +163,7 @@ static void print_geometry(const kent_sheet *s)
     kent_derivation d = {0};
     bool drawn = f->point >= 0 && isfinite(f->at.x);
     for (size_t i = 0; i < f->port_count; i++) {
-        drawn = drawn && ports[i].toward >= 0;
+        drawn = drawn && (ports[i].toward >= 0 || ports[i].kind != KENT_PORT_SPAN);
     }
     if (!drawn) {
         kent_text_add(s->out, "Geometry: as stated in the case, no coordinates.\n");
@@ -134,9 +172,14 @@ static void print_geometry(const kent_sheet *s)
     char says[160];
     (void)snprintf(says, sizeof says, "Geometry of %s, x east, y north, z up", f->id);
     kent_derivation_heading(&d, says);
-    kent_derivation_put(&d, "x0", f->at.x, KENT_LENGTH, KENT_GIVEN, "x of the fitting");
-    kent_derivation_put(&d, "y0", f->at.y, KENT_LENGTH, KENT_GIVEN, "y of the fitting");
-    kent_derivation_put(&d, "z0", f->at.z, KENT_LENGTH, KENT_GIVEN, "z of the fitting");
+    if (!spread(s)) {
+        kent_derivation_put(&d, "x0", f->at.x, KENT_LENGTH, KENT_GIVEN,
+                            "x of the fitting");
+        kent_derivation_put(&d, "y0", f->at.y, KENT_LENGTH, KENT_GIVEN,
+                            "y of the fitting");
+        kent_derivation_put(&d, "z0", f->at.z, KENT_LENGTH, KENT_GIVEN,
+                            "z of the fitting");
+    }
     for (size_t i = 0; i < f->port_count; i++) {
         derive_leg(s, i, &d);
     }

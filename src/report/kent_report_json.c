@@ -347,12 +347,18 @@ static json_t *block_of(const kent_holding *h)
     return object_done(o);
 }
 
+/* The ports of the case that governs; without one the fitting's own. */
 static json_t *ports_of(const kent_model *m, const kent_fitting *f,
-                        const kent_instant *at)
+                        const kent_fitting_loads *loads, const kent_holding *h)
 {
+    const kent_load_case none = {0};
+    const kent_instant *at = kent_shown_instant(loads, h);
+    kent_port ports[KENT_PORTS];
+    const size_t count = kent_load_case_ports(
+        m, f, h->governing >= 0 ? &loads->cases[h->governing] : &none, ports);
     kent_object list = list_new();
-    for (size_t i = 0; i < f->port_count; i++) {
-        const kent_port *port = &m->ports[f->port_first + i];
+    for (size_t i = 0; i < count; i++) {
+        const kent_port *port = &ports[i];
         const bool known = at && i < at->balance.port_count;
         const kent_port_state *state = known ? &at->balance.port[i] : NULL;
         kent_object o = object_new();
@@ -485,7 +491,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     set(&o, "held", json_boolean(h->held));
     set(&o, "needs_nothing", json_boolean(h->needs_nothing));
     set(&o, "block", block_of(h));
-    set(&o, "ports", ports_of(m, f, kent_shown_instant(loads, h)));
+    set(&o, "ports", ports_of(m, f, loads, h));
     set(&o, "restrained_length_m", real(h->restrained_length));
     set(&o, "restrained", legs_of(m, f, h));
     set(&o, "cautions", notes_of(&h->cautions));

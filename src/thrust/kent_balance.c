@@ -82,6 +82,23 @@ double kent_port_level(const kent_fitting *f, const kent_port *port)
     return isnan(port->level) ? f->at.z : port->level;
 }
 
+int kent_port_point(const kent_model *m, const kent_fitting *f, const kent_port *port)
+{
+    if (port->kind != KENT_PORT_SPAN) return f->point;
+    const kent_span *span = &m->spans[port->span];
+    const size_t first = span->route_first;
+    double least = INFINITY;
+    int point = f->point;
+
+    for (size_t r = first; r < first + span->route_count; r++) {
+        const double gap = fabs(m->chainage[r] - m->chainage[first] - port->chainage);
+        if (!(gap < least)) continue;
+        least = gap;
+        point = m->route[r];
+    }
+    return point;
+}
+
 double kent_balance_flow_gap(const kent_port *ports, size_t count)
 {
     double sum = 0.0, largest = 0.0;

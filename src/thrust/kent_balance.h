@@ -50,6 +50,10 @@ size_t kent_port_widest(const kent_port *ports, size_t count);
  * fitting's centre. */
 double kent_port_level(const kent_fitting *f, const kent_port *port);
 
+/* The point that a leg leaves from: of a group's leg its member's, else the fitting's.
+ */
+int kent_port_point(const kent_model *m, const kent_fitting *f, const kent_port *port);
+
 /* Worst imbalance of flow over the largest flow of a ports-only fitting, 0 .. 1. */
 double kent_balance_flow_gap(const kent_port *ports, size_t count);
 

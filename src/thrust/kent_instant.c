@@ -156,26 +156,13 @@ size_t kent_load_case_ports(const kent_model *m, const kent_fitting *f,
     return count + 1;
 }
 
-/* The place of a port: of the point of its pipe, else the centre at the port's level.
- */
+/* The place of a port: of its point, at its own level. */
 static kent_vec3 port_place(const kent_model *m, const kent_fitting *f,
                             const kent_port *port)
 {
-    kent_vec3 at = f->at;
+    const bool centre = port->kind != KENT_PORT_SPAN;
+    kent_vec3 at = centre ? f->at : m->points[kent_port_point(m, f, port)].at;
 
-    if (port->kind == KENT_PORT_SPAN) {
-        const kent_span *span = &m->spans[port->span];
-        const size_t first = span->route_first;
-        size_t nearest = first;
-        for (size_t r = first; r < first + span->route_count; r++) {
-            const double gap =
-                fabs(m->chainage[r] - m->chainage[first] - port->chainage);
-            const double least =
-                fabs(m->chainage[nearest] - m->chainage[first] - port->chainage);
-            if (gap < least) nearest = r;
-        }
-        at = m->points[m->route[nearest]].at;
-    }
     at.z = kent_port_level(f, port);
     return at;
 }
