@@ -99,8 +99,12 @@ static void check_range(kent_reader *r, kent_record *record, const kent_key *key
 static void complain_type(kent_reader *r, kent_record *record, const kent_twig *twig,
                           const char *key, const char *belongs)
 {
-    complain(r, record, twig, "%s is %s where %s belongs", key,
-             kent_twig_type_word(twig), belongs);
+    char shown[80] = "";
+    if (kent_twig_text(twig) || !isnan(kent_twig_number(twig))) {
+        show(twig, shown, sizeof shown);
+    }
+    complain(r, record, twig, "%s%s%s is %s where %s belongs", key,
+             shown[0] ? " = " : "", shown, kent_twig_type_word(twig), belongs);
 }
 
 static double read_quantity(kent_reader *r, kent_record *record, const char *key,
@@ -146,13 +150,20 @@ static void quantity(kent_reader *r, kent_record *record, const kent_key *key,
 static void number(kent_reader *r, kent_record *record, const kent_key *key,
                    kent_field *f)
 {
+    const char *text = kent_twig_text(f->twig);
     f->number = kent_twig_number(f->twig);
-    if (isnan(f->number)) {
+    if (text && text[0] != '\0' && text[kent_text_number(text)] == '\0') {
+        complain(r, record, f->twig,
+                 "%s = \"%.60s\" stands in quotes, and %s is a number without unit; "
+                 "write %s = %.60s",
+                 key->key, text, key->key, key->key, text);
+    } else if (isnan(f->number)) {
         complain_type(r, record, f->twig, key->key, "a number without unit");
     } else if (key->value == KENT_VALUE_COUNT &&
                kent_twig_type_of(f->twig) != KENT_TWIG_WHOLE) {
-        complain(r, record, f->twig, "%s = %.9g is not a whole number", key->key,
-                 f->number);
+        complain(r, record, f->twig,
+                 "%s = %.9g must be a whole number, written without a decimal point",
+                 key->key, f->number);
     } else {
         check_range(r, record, key, f->twig, f->number);
     }
@@ -182,12 +193,15 @@ static void text(kent_reader *r, kent_record *record, const kent_key *key,
 {
     f->text = kent_twig_text(f->twig);
     if (!f->text) {
-        complain_type(r, record, f->twig, key->key, "a text");
+        complain_type(r, record, f->twig, key->key, "a text in quotes");
     } else if ((double)strlen(f->text) > key->most) {
-        complain(r, record, f->twig, "%s is longer than %g bytes", key->key, key->most);
+        complain(r, record, f->twig, "%s is longer than %g bytes; shorten it", key->key,
+                 key->most);
     } else if (has_control(f->text)) {
-        complain(r, record, f->twig, "%s holds a line end or another control character",
-                 key->key);
+        complain(
+            r, record, f->twig,
+            "%s holds a line end or another control character; write it in one line",
+            key->key);
     }
 }
 
@@ -248,6 +262,33 @@ static kent_shelf shelf_of(const char *group)
     return (kent_shelf)i;
 }
 
+/* Where nothing has a name like the one that is looked for. */
+static const char *where_to_look(const kent_reader *r, kent_shelf shelf)
+{
+    switch (shelf) {
+    case KENT_SHELF_PIPE_CLASSES:
+    case KENT_SHELF_MATERIALS:
+    case KENT_SHELF_VALVE_TYPES:
+    case KENT_SHELF_SOIL_ROWS:
+    case KENT_SHELF_RULES:
+        return "; 'kentledge catalogue' prints those there are";
+    case KENT_SHELF_SOILS:
+        return "; give it in soils, or name one that 'kentledge catalogue' prints";
+    case KENT_SHELF_POINTS:
+    case KENT_SHELF_FIXED_LEVELS:
+    case KENT_SHELF_VALVES:
+    case KENT_SHELF_OUTFLOWS:
+    case KENT_SHELF_PIPES:
+    case KENT_SHELF_SCENARIOS:
+    case KENT_SHELF_FITTINGS:
+    case KENT_SHELF_STATES:
+    case KENT_SHELF_COUNT:
+        return r->shelves[shelf].count == 0 ? "; the case has none"
+                                            : ", nor one with a name like it";
+    }
+    return "";
+}
+
 int kent_record_lookup(kent_reader *r, kent_record *record, const kent_twig *item,
                        const char *key, kent_shelf shelf)
 {
@@ -270,8 +311,8 @@ int kent_record_lookup(kent_reader *r, kent_record *record, const kent_twig *ite
         complain(r, record, item, "%s: there is no %s \"%.60s\"; did you mean \"%s\"?",
                  key, SHELVES[shelf].word, name, near);
     } else {
-        complain(r, record, item, "%s: there is no %s \"%.60s\"", key,
-                 SHELVES[shelf].word, name);
+        complain(r, record, item, "%s: there is no %s \"%.60s\"%s", key,
+                 SHELVES[shelf].word, name, where_to_look(r, shelf));
     }
     return -1;
 }
@@ -494,7 +535,12 @@ static void compound(kent_reader *r, kent_record *record, const kent_key *key,
 static void boolean(kent_reader *r, kent_record *record, const kent_key *key,
                     kent_field *f)
 {
-    if (kent_twig_type_of(f->twig) != KENT_TWIG_SWITCH) {
+    const char *text = kent_twig_text(f->twig);
+    if (text && (strcmp(text, "true") == 0 || strcmp(text, "false") == 0)) {
+        complain(r, record, f->twig,
+                 "%s = \"%s\" stands in quotes; write %s = %s without them", key->key,
+                 text, key->key, text);
+    } else if (kent_twig_type_of(f->twig) != KENT_TWIG_SWITCH) {
         complain_type(r, record, f->twig, key->key, "true or false");
     }
 }
@@ -558,14 +604,17 @@ static void read_member(kent_reader *r, kent_record *record, const char *group,
             complain(r, record, twig, "'%.60s' is not a key of %s; did you mean '%s'?",
                      kent_twig_name(twig), kent_key_group_word(group), near);
         } else {
-            complain(r, record, twig, "'%.60s' is not a key of %s",
-                     kent_twig_name(twig), kent_key_group_word(group));
+            complain(
+                r, record, twig,
+                "'%.60s' is not a key of %s; 'kentledge check --keys' prints those "
+                "there are",
+                kent_twig_name(twig), kent_key_group_word(group));
         }
         return;
     }
     kent_field *f = &record->fields[i];
     if (!kent_key_is_now(&record->keys[i])) {
-        complain(r, record, twig, "'%s' is not in this version", name);
+        complain(r, record, twig, "'%s' is not in this version; take it out", name);
     } else if (f->twig) {
         complain(r, record, twig, "'%s' is given twice, spelt two ways; keep one",
                  name);

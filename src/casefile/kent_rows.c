@@ -80,8 +80,10 @@ static void complain_unknown(kent_reader *r, const kent_rows *t, int line,
         complain(r, t, line, "heading '%.60s' is not a key of %s; did you mean '%s'?",
                  name, kent_key_group_word(t->group), near);
     } else {
-        complain(r, t, line, "heading '%.60s' is not a key of %s", name,
-                 kent_key_group_word(t->group));
+        complain(r, t, line,
+                 "heading '%.60s' is not a key of %s; 'kentledge check --keys' prints "
+                 "those there are",
+                 name, kent_key_group_word(t->group));
     }
 }
 
@@ -124,9 +126,10 @@ static void check_unit(kent_reader *r, const kent_rows *t, int line, const colum
     (void)snprintf(one, sizeof one, "1 %s", c->unit);
     const kent_status status = kent_units_read(r->units, one, kind, &si, &err);
     if (status == KENT_E_NOMEM) r->failed = true;
-    if (status == KENT_E_INPUT) {
-        complain(r, t, line, "heading '%s [%s]': %s; write for instance '%s [%s]'",
-                 c->key->key, c->unit, err.what, c->key->key, usual_unit(r, kind));
+    if (status == KENT_E_INPUT) { /* its example is of a cell */
+        complain(r, t, line, "heading '%s [%s]': %.*s; write for instance '%s [%s]'",
+                 c->key->key, c->unit, (int)strcspn(err.what, ";"), err.what,
+                 c->key->key, usual_unit(r, kind));
     }
 }
 
@@ -153,7 +156,8 @@ static void read_heading(kent_reader *r, kent_rows *t, int line, size_t index,
     }
     const kent_value value = c->key->value;
     if (!kent_key_is_now(c->key)) {
-        complain(r, t, line, "'%s' is not in this version", c->key->key);
+        complain(r, t, line, "'%s' is not in this version; take the column out",
+                 c->key->key);
     } else if ((value == KENT_VALUE_LIST && !is_route(c->key)) ||
                value == KENT_VALUE_GROUP || value == KENT_VALUE_VECTOR) {
         complain(r, t, line,

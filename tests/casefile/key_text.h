@@ -103,7 +103,7 @@ static inline const char *wrong_type_for(const kent_key *k)
     case KENT_VALUE_TURN:
         return "{ }";
     case KENT_VALUE_SWITCH:
-        return "\"true\"";
+        return "\"yes\"";
     case KENT_VALUE_LIST:
     case KENT_VALUE_GROUP:
         return "\"text\"";

@@ -156,6 +156,23 @@ static void every_key_refuses_a_value_of_another_type(void **state)
     reader_end(&r);
 }
 
+static void what_stands_in_quotes_by_mistake_is_told_so(void **state)
+{
+    (void)state;
+    kent_reader r = reader();
+    size_t next = 0;
+    for (const kent_key *k; (k = next_now(&next)) != NULL;) {
+        char part[80];
+        (void)snprintf(part, sizeof part, "write %s = ", k->key);
+        if (k->value == KENT_VALUE_SWITCH) {
+            assert_true(refused(&r, k, "\"true\"", part));
+        } else if (k->value == KENT_VALUE_NUMBER || k->value == KENT_VALUE_COUNT) {
+            assert_true(refused(&r, k, "\"1.5\"", part));
+        }
+    }
+    reader_end(&r);
+}
+
 static void every_reference_to_nothing_is_refused(void **state)
 {
     (void)state;
@@ -326,6 +343,7 @@ int main(void)
         cmocka_unit_test(every_quantity_refuses_a_number_without_unit),
         cmocka_unit_test(limits_are_accepted_and_what_is_beyond_is_refused),
         cmocka_unit_test(every_key_refuses_a_value_of_another_type),
+        cmocka_unit_test(what_stands_in_quotes_by_mistake_is_told_so),
         cmocka_unit_test(every_reference_to_nothing_is_refused),
         cmocka_unit_test(every_word_is_accepted_and_no_other),
         cmocka_unit_test(every_required_key_is_missed),

@@ -218,8 +218,8 @@ static void faults_of_headings_say_what_would_be_right(void **state)
         {NULL, "id,x [m],y [bar],z [m]\n" ROWS, NULL, "points.csv", 1,
          "heading 'y [bar]': '1 bar' is a pressure where a length belongs"},
         {NULL, "id,x [m],y [m],z [mtr]\n" ROWS, NULL, "points.csv", 1,
-         "'mtr' in '1 mtr' is not a unit; write for instance \"1.4 m\" or \"4.5 ft\"; "
-         "write for instance 'z [m]'"},
+         "heading 'z [mtr]': 'mtr' in '1 mtr' is not a unit; write for instance 'z "
+         "[m]'"},
         {NULL, "id [m],x [m],y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
          "heading 'id [m]': id takes no unit; write 'id'"},
         {NULL, "id,x (m),y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
@@ -314,9 +314,10 @@ static void faults_of_cells_say_what_would_be_right(void **state)
         {NULL, NULL, "id,route,pipe_class\nA,R1,DI-EN545-C40-DN300\n", "pipes.csv", 2,
          "pipe \"A\": route has 1 point; it needs at least two"},
         {NULL, NULL, "id,route,poisson_ratio\nA,R1 B1 E1,high\n", "pipes.csv", 2,
-         "pipe \"A\": poisson_ratio is a text where a number without unit belongs"},
+         "pipe \"A\": poisson_ratio = \"high\" is a text where a number without unit "
+         "belongs"},
         {NULL, "id,x [m],y [m],z [m],record\nR1,0,0,50,yes\n", NULL, "points.csv", 2,
-         "point \"R1\": record is a text where true or false belongs"},
+         "point \"R1\": record = \"yes\" is a text where true or false belongs"},
         {NULL, HEAD "R1,0,0,\"50\n", NULL, "points.csv", 2, "never closed"},
         {NULL, HEAD "R1,0,0,50\nB\xFF,1,1,1\n", NULL, "points.csv", 3, "is not UTF-8"},
     };
