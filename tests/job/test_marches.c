@@ -57,8 +57,9 @@ static kent_results *run(kent_build *b, const kent_job_options *options)
     kent_error err = {0};
     kent_results *r = NULL;
     kent_build_derive(b);
-    if (kent_job_run(b->model, options, &r, &err))
+    if (kent_job_run(b->model, options, &r, &err)) {
         fail_msg("%s: %s", err.where, err.what);
+    }
     return r;
 }
 
