@@ -3,19 +3,30 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* The first place, in order of spans and then along the route, where a point is met. */
-static bool place_of_point(const kent_model *m, int point, kent_watch *out)
+/* Where and by what each point is looked at. */
+typedef struct looks {
+    kent_watch *place; /* [point_count] the first, in order of spans and then along the
+                          route, where the point is met; span -1: on no pipe */
+    int *valve;        /* [point_count] that stands there; -1: none */
+    bool *wanted;      /* [point_count] its history is kept */
+} looks;
+
+static void find_places(const kent_model *m, const looks *l)
 {
+    for (size_t p = 0; p < m->point_count; p++) {
+        l->place[p].span = l->valve[p] = -1;
+    }
     for (size_t i = 0; i < m->span_count; i++) {
-        const kent_span *span = &m->spans[i];
-        const size_t first = span->route_first;
-        for (size_t r = first; r < first + span->route_count; r++) {
-            if (m->route[r] != point) continue;
-            *out = (kent_watch){(int)i, m->chainage[r] - m->chainage[first]};
-            return true;
+        const size_t first = m->spans[i].route_first;
+        for (size_t r = first; r < first + m->spans[i].route_count; r++) {
+            kent_watch *place = &l->place[m->route[r]];
+            if (place->span >= 0) continue;
+            *place = (kent_watch){(int)i, m->chainage[r] - m->chainage[first]};
         }
     }
-    return false;
+    for (size_t i = m->valve_count; i > 0; i--) {
+        l->valve[m->valves[i - 1].point] = (int)i - 1; /* the first stays */
+    }
 }
 
 /* The end of the first span at a node. */
@@ -24,14 +35,6 @@ static kent_watch place_of_node(const kent_model *m, int node)
     const kent_end end = m->ends[m->nodes[node].end_first];
     const double length = m->spans[end.span].length;
     return (kent_watch){end.span, end.side == 0 ? 0.0 : length};
-}
-
-static int valve_at(const kent_model *m, int point)
-{
-    for (size_t i = 0; i < m->valve_count; i++) {
-        if (m->valves[i].point == point) return (int)i;
-    }
-    return -1;
 }
 
 /* Marks the points whose history is wanted. */
@@ -74,19 +77,19 @@ static void add_view(kent_viewpoints *v, kent_viewpoint view, kent_watch watch,
     v->count++;
 }
 
-static void add_point(kent_viewpoints *v, const kent_model *m, int point, bool history)
+static void add_point(kent_viewpoints *v, const kent_model *m, const looks *l,
+                      int point)
 {
-    const int valve = valve_at(m, point);
-    kent_watch watch;
+    const int valve = l->valve[point];
+    const bool history = l->wanted[point];
     if (valve < 0) {
-        if (!place_of_point(m, point, &watch)) return; /* on no pipe */
-        add_view(v, (kent_viewpoint){point, 1.0, false}, watch, history);
+        if (l->place[point].span < 0) return; /* on no pipe */
+        add_view(v, (kent_viewpoint){point, 1.0, false}, l->place[point], history);
         return;
     }
     const int *node = m->valves[valve].node;
-    watch = place_of_node(m, node[0]);
-    add_view(v, (kent_viewpoint){point, sign_at_valve(m, valve), false}, watch,
-             history);
+    add_view(v, (kent_viewpoint){point, sign_at_valve(m, valve), false},
+             place_of_node(m, node[0]), history);
     if (node[1] < 0) return;
     add_view(v, (kent_viewpoint){point, 1.0, true}, place_of_node(m, node[1]), false);
 }
@@ -98,9 +101,13 @@ kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *record
     size_t recorder_count = 0;
     const kent_watch *own = kent_recorder_watches(recorder, &recorder_count);
     const size_t most = m->point_count + m->valve_count;
-    bool *wanted = kent_alloc(m->point_count, sizeof *wanted);
+    const looks l = {
+        .place = kent_alloc(m->point_count, sizeof *l.place),
+        .valve = kent_alloc(m->point_count, sizeof *l.valve),
+        .wanted = kent_alloc(m->point_count, sizeof *l.wanted),
+    };
     kent_viewpoints *v = kent_alloc(1, sizeof *v);
-    if (!wanted || !v) goto done;
+    if (!l.place || !l.valve || !l.wanted || !v) goto done;
 
     v->watches = kent_alloc(recorder_count + most, sizeof *v->watches);
     v->views = kent_alloc(most, sizeof *v->views);
@@ -109,9 +116,10 @@ kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *record
 
     v->recorder_count = recorder_count;
     if (recorder_count) memcpy(v->watches, own, recorder_count * sizeof *own);
-    mark_histories(m, wanted);
+    find_places(m, &l);
+    mark_histories(m, l.wanted);
     for (size_t i = 0; i < m->point_count; i++) {
-        add_point(v, m, (int)i, wanted[i]);
+        add_point(v, m, &l, (int)i);
     }
     *out = v;
     v = NULL;
@@ -119,7 +127,9 @@ kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *record
 done:
     if (status) (void)kent_error_nomem(err);
     kent_viewpoints_free(v);
-    free(wanted);
+    free(l.place);
+    free(l.valve);
+    free(l.wanted);
     return status;
 }
 
