@@ -147,8 +147,8 @@ static void close_between(kent_joining *j, int fitting, bool *apart)
             continue;
         }
         if (way.fitting == fitting) continue;
-        if (kent_joining_root(j, way.fitting) != kent_joining_root(j, fitting))
-            continue;
+        const int root = kent_joining_root(j, fitting);
+        if (kent_joining_root(j, way.fitting) != root) continue;
         kent_joining_inner(j, k, &way);
         *apart |= way.slips;
     }

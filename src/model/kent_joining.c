@@ -100,8 +100,8 @@ bool kent_joining_way(const kent_joining *j, int fitting, size_t port, double di
                                                            : pipe->inside_diameter);
         out->distance += fabs(m->chainage[stop] - m->chainage[arm.stop]);
         out->slips |= kent_joint_slips(pipe->joint);
-        if (out->distance >= diameters * outside || out->distance > length)
-            return false;
+        const bool far = out->distance >= diameters * outside || out->distance > length;
+        if (far) return false;
         out->fitting = j->fitting_at[m->route[stop]];
         if (out->fitting >= 0) {
             out->port = port_of_arm(j, out->fitting, back);

@@ -320,6 +320,29 @@ static void two_outside_diameters_make_a_reducer(void **state)
     kent_build_clear(&b);
 }
 
+static void a_reducer_is_pushed_towards_its_small_end_either_way(void **state)
+{
+    (void)state;
+    static const double bores[2][2] = {{0.6, 0.4}, {0.4, 0.6}}; /* m, along the flow */
+    for (size_t i = 0; i < 2; i++) {
+        kent_build b = kent_build_new();
+        kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+        kent_build_point(&b, "X", 100.0, 0.0, 0.0);
+        kent_build_point(&b, "E", 200.0, 0.0, 0.0);
+        kent_build_pipe(&b, "A", "R X", bores[i][0], 1000.0);
+        kent_build_pipe(&b, "B", "X E", bores[i][1], 1000.0);
+        kent_build_fixed_level(&b, "R", 50.0);
+        kent_build_derive(&b);
+        const kent_port *in = port(&b, "X", 0), *out = port(&b, "X", 1);
+        const double push = -in->seal_diameter * in->seal_diameter * in->direction.x -
+                            out->seal_diameter * out->seal_diameter * out->direction.x;
+        assert_int_equal(fitting(&b, "X")->type, KENT_REDUCER);
+        assert_true(i == 0 ? push > 0.0 : push < 0.0);
+        assert_close(fitting(&b, "X")->size, 0.6, 1e-15);
+        kent_build_clear(&b);
+    }
+}
+
 static void a_route_ending_in_nothing_is_a_dead_end(void **state)
 {
     (void)state;
@@ -514,6 +537,7 @@ int main(void)
         cmocka_unit_test(a_branch_below_75_degrees_makes_a_wye),
         cmocka_unit_test(four_legs_make_a_cross),
         cmocka_unit_test(two_outside_diameters_make_a_reducer),
+        cmocka_unit_test(a_reducer_is_pushed_towards_its_small_end_either_way),
         cmocka_unit_test(a_route_ending_in_nothing_is_a_dead_end),
         cmocka_unit_test(valves_are_fittings_with_one_or_two_ports),
         cmocka_unit_test(fittings_stand_in_the_order_of_routes_and_ports_only_last),
