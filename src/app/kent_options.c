@@ -311,8 +311,9 @@ static error_t read_key(int key, char *text, struct argp_state *state)
         (void)printf("kentledge %s\n", KENT_VERSION);
         exit(KENT_EXIT_DONE);
     case ARGP_KEY_ARG:
-        if (r->word_count == 2 + KENT_OPTIONS_WORDS)
+        if (r->word_count == 2 + KENT_OPTIONS_WORDS) {
             argp_error(state, "'%s' is one word too many", text);
+        }
         r->words[r->word_count++] = text;
         return 0;
     case ARGP_KEY_END:

@@ -341,8 +341,9 @@ kent_status kent_report_catalogue(const kent_catalogue *c, const kent_choice *ch
                             .out = &out};
     *rows = 0;
     for (size_t i = 0; i < sizeof PARTS / sizeof PARTS[0]; i++) {
-        if (!choice->part || strcmp(choice->part, PARTS[i].word) == 0)
+        if (!choice->part || strcmp(choice->part, PARTS[i].word) == 0) {
             PARTS[i].list(&l);
+        }
     }
     const kent_status status = kent_sink_flush(sink, &out);
     kent_notes_clear(&sources);
