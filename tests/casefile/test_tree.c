@@ -97,6 +97,7 @@ static void what_libconfig_reads_wrongly_is_refused_with_reason(void **state)
     refuses("\xFF\xFE", "UTF-16", 1);
     refuses("@import \"x\"\n", "'@' cannot stand here", 1);
     refuses("@include x\n", "needs a file name in quotes", 1);
+    refuses("@include \"x\" a = 1;\n", "alone on its line", 1);
     refuses("@include \"/etc/passwd\"\n", "leaves the folder", 1);
     refuses("@include \"a/../../b\"\n", "leaves the folder", 1);
 }
@@ -199,6 +200,39 @@ static void a_file_that_is_not_there_is_no_input_error(void **state)
     assert_int_equal(kent_tree_read("/tmp", &tree, &c, &err), KENT_E_IO);
 }
 
+/* 64 MB is the most that docs/case-format.md allows; the file is a hole. */
+static void a_case_too_large_is_refused_before_it_is_read(void **state)
+{
+    (void)state;
+    char path[64];
+    kent_tree *tree = NULL;
+    kent_complaints c = {0};
+    kent_error err = {0};
+    write_bytes(path, "a = 1;\n", 7);
+    assert_int_equal(truncate(path, 65L * 1024 * 1024), 0);
+    assert_int_equal(kent_tree_read(path, &tree, &c, &err), KENT_E_INPUT);
+    assert_string_equal(c.kept[0].what, "the case is larger than 64 MB");
+    (void)unlink(path);
+}
+
+static void an_include_of_a_path_too_long_is_refused(void **state)
+{
+    (void)state;
+    char path[64];
+    char far[1200] = "/tmp/";
+    kent_tree *tree = NULL;
+    kent_complaints c = {0};
+    kent_error err = {0};
+    write_bytes(path, "@include \"part.inc\"\n", 20);
+    for (int i = 0; i < 510; i++) {
+        (void)strcat(far, "./"); /* NOLINT: 5 + 1020 + 16 bytes */
+    }
+    (void)strcat(far, path + strlen("/tmp/")); /* NOLINT: as above */
+    assert_int_equal(kent_tree_read(far, &tree, &c, &err), KENT_E_INPUT);
+    assert_string_equal(c.kept[0].what, "@include \"part.inc\": the path is too long");
+    (void)unlink(path);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -212,6 +246,8 @@ int main(void)
         cmocka_unit_test(lengths_and_depths_have_limits),
         cmocka_unit_test(an_included_file_keeps_its_own_name_and_lines),
         cmocka_unit_test(a_file_that_is_not_there_is_no_input_error),
+        cmocka_unit_test(a_case_too_large_is_refused_before_it_is_read),
+        cmocka_unit_test(an_include_of_a_path_too_long_is_refused),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
