@@ -117,8 +117,11 @@ static void read_site(const kent_layout *l, kent_site *site)
     if (site->schematic && some_plan && site->count > 1) {
         kent_notes_add(&site->m->cautions,
                        "point \"%s\": not every pipe there has coordinates, so none of "
-                       "its angles are taken from them",
-                       m->points[site->point].id);
+                       "its angles are taken from them%s",
+                       m->points[site->point].id,
+                       m->points[site->point].laid_out
+                           ? "; give the pipe that branches off there its branch_turn"
+                           : "");
     }
 }
 

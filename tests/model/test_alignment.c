@@ -154,6 +154,26 @@ static void a_branch_turns_off_the_pipe_that_runs_there(void **state)
     assert_refused(&b, "branch_turn = \"90 deg left\"", 100);
 }
 
+static void a_branch_of_unknown_turn_is_said_or_refused(void **state)
+{
+    (void)state;
+    kent_build b = street_main();
+    kent_build_point(&b, "D", NONE, NONE, 0.0);
+    const int pipe = kent_build_pipe(&b, "C", "P D", 0.1, 1000.0);
+    b.model->pipes[pipe].length = 40.0;     /* as a schematic branch would be */
+    b.model->pipes[pipe].branch_turn = 0.0; /* straight on, the main turns left */
+    kent_build_derive(&b);
+    assert_at(&b, "D", 140.0, 0.0);
+    assert_int_equal(fitting(&b, "P")->type, KENT_TEE);
+    b.model->points[1].turn = NONE; /* nothing turns at P: the run is known */
+    b.model->pipes[pipe].branch_turn = NONE;
+    kent_build_derive(&b);
+    assert_int_equal(b.model->cautions.count, 1);
+    assert_non_null(strstr(b.model->cautions.text[0], "its branch_turn"));
+    b.model->points[1].turn = 90.0 * DEGREE; /* the tee's run would be lost */
+    assert_refused(&b, "branch_turn = \"90 deg left\"", 101);
+}
+
 /* A ring: along +x to T, left to P, left to Q, and back down on to R's leg at S. */
 static kent_build ring(double last_turn)
 {
@@ -238,6 +258,7 @@ int main(void)
         cmocka_unit_test(a_riser_has_one_station_at_foot_and_head),
         cmocka_unit_test(a_pipe_goes_on_with_the_heading_of_the_one_before),
         cmocka_unit_test(a_branch_turns_off_the_pipe_that_runs_there),
+        cmocka_unit_test(a_branch_of_unknown_turn_is_said_or_refused),
         cmocka_unit_test(a_ring_must_close),
         cmocka_unit_test(what_cannot_be_laid_out_is_refused),
     };
