@@ -93,6 +93,8 @@ static void derive_bearing(const kent_leg_piece *at, kent_derivation *d)
 {
     const kent_trench *t = &at->trench;
     const double stress = t->unit_weight * (t->cover + 0.5 * t->outside_diameter);
+    const int kind = at->trench_kind;
+    const bool of_trench = kind >= 0 && !isnan(at->soil->passive_by_trench[kind]);
     char says[120];
 
     kent_derivation_work(d, "Kp", kent_rankine_passive(t->friction_angle), KENT_RATIO,
@@ -106,10 +108,10 @@ static void derive_bearing(const kent_leg_piece *at, kent_derivation *d)
         d, "Pp", kent_passive_pressure(t->friction_angle, t->cohesion, stress),
         KENT_STRESS, "Kp*sa + 2*c*sqrt(Kp)", "11.6", "passive pressure at the axis");
     (void)snprintf(says, sizeof says, "share of it that a trench of %s mobilises",
-                   kent_trench_word(at->trench_kind));
-    kent_derivation_put(
-        d, "Kn", t->passive_ratio, KENT_RATIO, kent_soil_source(at->soil),
-        at->trench_kind >= 0 ? says : "share of it that this trench mobilises");
+                   kent_trench_word(kind));
+    kent_derivation_put(d, "Kn", t->passive_ratio, KENT_RATIO,
+                        kent_soil_source(at->soil),
+                        of_trench ? says : "share of it that this trench mobilises");
     kent_derivation_work(d, "Rs", at->bearing, KENT_FORCE_PER_LENGTH, "Kn*Pp*OD",
                          "11.7", "resistance of the trench side");
 }

@@ -46,8 +46,9 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[first + i];
         double clear = clearance(w, h, &wedge, o, 1.0);
-        if (leans_both_ways(w, h))
+        if (leans_both_ways(w, h)) {
             clear = fmin(clear, clearance(w, h, &wedge, o, -1.0));
+        }
         if (!(clear > 0.0)) {
             w->obstacle = o;
             return false;

@@ -104,6 +104,7 @@ static void refuse_bearing(const kent_holding_work *w, kent_text *t)
     const kent_system units = w->m->units;
     const double axis = kent_site_axis(&w->site);
 
+    if (!s) return; /* another fault */
     switch (w->site.gap) {
     case KENT_BEARING_KNOWN:
         kent_text_add(t,
@@ -142,7 +143,7 @@ static void refuse_obstacle(const kent_holding_work *w, kent_text *t)
                   o->what, kent_said_of(KENT_LENGTH, units, o->distance).s,
                   kent_said_of(KENT_LENGTH, units, o->depth).s,
                   kent_said_of(KENT_LENGTH, units, w->reach).s);
-    if (isnan(w->soil->friction_angle)) {
+    if (w->soil && isnan(w->soil->friction_angle)) {
         kent_text_add(t, "; friction angle not given, %s is taken",
                       kent_said_of(KENT_ANGLE, units, KENT_WEDGE_ANGLE).s);
     }

@@ -1,4 +1,5 @@
 #include "kent_hand.h"
+#include "kent_arith.h"
 
 #include <stdio.h>
 #include <stdlib.h>
@@ -100,4 +101,22 @@ void kent_hand_expect(const kent_holding *h, const char *words)
         print_error("caution: %s\n", h->cautions.text[i]);
     }
     fail_msg("no caution says \"%s\"", words);
+}
+
+size_t kent_hand_lines(const kent_derivation *d, kent_system system)
+{
+    size_t checked = 0;
+
+    for (size_t i = 0; i < d->count; i++) {
+        const kent_line *line = &d->lines[i];
+        char digits[512], printed[64], why[1024];
+        if (line->formula[0] == '\0') continue;
+        kent_line_numbers(d, i, system, digits, sizeof digits);
+        kent_line_value(line, system, printed, sizeof printed);
+        if (!kent_arith_agrees(digits, printed, why, sizeof why)) {
+            fail_msg("%s = %s: %s", line->symbol, line->formula, why);
+        }
+        checked++;
+    }
+    return checked;
 }

@@ -27,4 +27,8 @@ kent_restraints *kent_hand_size(const kent_build *b, const kent_hand_case *cases
 bool kent_hand_says(const kent_holding *h, const char *words);
 void kent_hand_expect(const kent_holding *h, const char *words);
 
+/* Works out every printed formula of a hand calculation again from its printed digits,
+ * failing the test where one does not follow; returns how many there were. */
+size_t kent_hand_lines(const kent_derivation *d, kent_system system);
+
 #endif

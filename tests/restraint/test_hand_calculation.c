@@ -1,6 +1,5 @@
 /* Every line of every hand calculation, worked out again from the digits it prints. */
 #include "kent_hand.h"
-#include "kent_arith.h"
 
 #include <math.h>
 #include <string.h>
@@ -48,25 +47,6 @@ static kent_build main_of_everything(void)
     return b;
 }
 
-/* Returns how many formulas were worked out. */
-static size_t check_lines(const char *id, const kent_derivation *d, kent_system system)
-{
-    size_t checked = 0;
-
-    for (size_t i = 0; i < d->count; i++) {
-        const kent_line *line = &d->lines[i];
-        char digits[512], printed[64], why[1024];
-        if (line->formula[0] == '\0') continue;
-        kent_line_numbers(d, i, system, digits, sizeof digits);
-        kent_line_value(line, system, printed, sizeof printed);
-        if (!kent_arith_agrees(digits, printed, why, sizeof why)) {
-            fail_msg("%s: %s = %s: %s", id, line->symbol, line->formula, why);
-        }
-        checked++;
-    }
-    return checked;
-}
-
 static void check_all(kent_build *b, size_t least)
 {
     kent_build_derive(b);
@@ -75,8 +55,8 @@ static void check_all(kent_build *b, size_t least)
 
     for (size_t i = 0; i < r->fitting_count; i++) {
         const kent_derivation *d = &r->fittings[i].derivation;
-        checked += check_lines(b->model->fittings[i].id, d, KENT_SI);
-        checked += check_lines(b->model->fittings[i].id, d, KENT_US);
+        checked += kent_hand_lines(d, KENT_SI);
+        checked += kent_hand_lines(d, KENT_US);
     }
     assert_true(checked >= least);
     kent_restraints_free(r);
@@ -117,8 +97,8 @@ static void so_it_does_under_little_cover(void **state)
     const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
 
     assert_non_null(kent_derivation_find(&h->derivation, "top"));
-    assert_true(check_lines("B", &h->derivation, KENT_SI) > 20);
-    assert_true(check_lines("B", &h->derivation, KENT_US) > 20);
+    assert_true(kent_hand_lines(&h->derivation, KENT_SI) > 20);
+    assert_true(kent_hand_lines(&h->derivation, KENT_US) > 20);
     kent_restraints_free(r);
     kent_build_clear(&b);
 }
@@ -165,8 +145,8 @@ static void so_it_does_where_a_fitting_is_pushed_up_and_pulled_down(void **state
     assert_int_equal(sag->block.type, KENT_BLOCK_BASE);
     assert_int_equal(crest->by_sense[KENT_DOWNWARD], 1);
     assert_int_equal(sag->by_sense[KENT_UPWARD], 1);
-    assert_true(check_lines("B", &crest->derivation, KENT_SI) > 20);
-    assert_true(check_lines("F", &sag->derivation, KENT_SI) > 20);
+    assert_true(kent_hand_lines(&crest->derivation, KENT_SI) > 20);
+    assert_true(kent_hand_lines(&sag->derivation, KENT_SI) > 20);
     kent_restraints_free(r);
     kent_build_clear(&b);
 }
@@ -188,8 +168,8 @@ static void so_it_does_where_one_block_does_for_all(void **state)
         const kent_line *vertical = kent_derivation_find(
             &reducer->derivation, reducer->by_sense[KENT_UPWARD] >= 0 ? "Vc" : "qv");
         assert_non_null(vertical);
-        assert_true(check_lines("G", &reducer->derivation, KENT_SI) > 20);
-        assert_true(check_lines("T", &tee->derivation, KENT_US) > 20);
+        assert_true(kent_hand_lines(&reducer->derivation, KENT_SI) > 20);
+        assert_true(kent_hand_lines(&tee->derivation, KENT_US) > 20);
         kent_restraints_free(r);
         kent_build_clear(&b);
     }
