@@ -32,6 +32,7 @@ static kent_build main_in(kent_bearing_route route, double rise)
     (void)kent_build_soil(&b, "till", NAN, 19e3, 1.5);
     kent_soil *s = &b.model->soils[0];
     s->route = route;
+    s->allowable_bearing = 500e3; /* of no account on another route */
     s->by_depth[0] = (kent_depth_row){1.0, 60e3};
     s->by_depth[1] = (kent_depth_row){1.5, 100e3};
     s->by_depth[2] = (kent_depth_row){2.5, 140e3};
