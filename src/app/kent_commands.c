@@ -173,9 +173,12 @@ done:
     return code;
 }
 
+/* By its own id, or by that of a point whose fitting is held as one with it. */
 static kent_exit find_fitting(const session *s, int *fitting)
 {
     const kent_model *m = s->model;
+    *fitting = kent_model_fitting_of(m, s->options->fitting);
+    if (*fitting >= 0) return KENT_EXIT_DONE;
     const char **names = kent_alloc(m->fitting_count, sizeof *names);
     if (!names) {
         say_error(&s->error, KENT_E_NOMEM);
@@ -184,12 +187,9 @@ static kent_exit find_fitting(const session *s, int *fitting)
     for (size_t i = 0; i < m->fitting_count; i++) {
         names[i] = m->fittings[i].id;
     }
-    *fitting = find_name(s->options->fitting, names, m->fitting_count);
-    if (*fitting < 0) {
-        say_unknown("fitting", s->options->fitting, names, m->fitting_count);
-    }
+    say_unknown("fitting", s->options->fitting, names, m->fitting_count);
     free(names);
-    return *fitting < 0 ? KENT_EXIT_INPUT : KENT_EXIT_DONE;
+    return KENT_EXIT_INPUT;
 }
 
 static kent_report_options report_options(const session *s)

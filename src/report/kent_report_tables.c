@@ -209,7 +209,7 @@ static bool try_fittings(kent_page *page, kent_room room)
     }
     const size_t gaps = FITTING_COLUMNS - 1; /* columns can stand closer by one each */
     const size_t least = kent_table_width(&t) - (roomy ? 0 : gaps);
-    const bool fits = page->limit == 0 || least <= page->limit || room == KENT_TIGHTEST;
+    const bool fits = page->limit == 0 || least <= page->limit || room == KENT_BRIEF;
     if (fits && kent_table_print(&t, page->limit, page->out)) page->cut = true;
     kent_table_clear(&t);
     return fits;
@@ -217,7 +217,7 @@ static bool try_fittings(kent_page *page, kent_room room)
 
 static void print_fittings(kent_page *page)
 {
-    for (kent_room room = KENT_ROOMY; room <= KENT_TIGHTEST; room++) {
+    for (kent_room room = KENT_ROOMY; room <= KENT_BRIEF; room++) {
         if (try_fittings(page, room)) return;
     }
 }

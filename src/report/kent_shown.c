@@ -205,14 +205,17 @@ static kent_shown bend_words(const kent_fitting *fitting, kent_room room)
             room > KENT_ROOMY ? "comb." : kent_orientation_word(fitting->orientation);
         break;
     }
-    return shown("%s %.1f°%s%s", kent_fitting_type_word(fitting->type),
-                 fitting->angle * DEGREES, word[0] != '\0' ? " " : "", word);
+    /* where room is shortest the way it turns says that it is a bend */
+    const bool steep = word[0] != '\0';
+    return shown("%s%.1f°%s%s", room == KENT_BRIEF && steep ? "" : "bend ",
+                 fitting->angle * DEGREES, steep ? " " : "", word);
 }
 
 /* What it is for, where that says more than its type. */
 static const char *role_or_type(const kent_fitting *fitting)
 {
     const bool end = fitting->type == KENT_DEAD_END;
+    if (fitting->type == KENT_GROUP) return kent_fitting_type_word(fitting->type);
     switch (fitting->role) {
     case KENT_ROLE_NONE:
         break;
@@ -300,7 +303,7 @@ kent_shown kent_shown_governing(const kent_fitting_loads *loads, const kent_part
     const kent_instant *at = kent_part_instant(loads, part);
     if (!at) return shown(KENT_SHOWN_NONE);
     const char *name = loads->cases[part->governing].title.s;
-    if (isnan(at->time) || room == KENT_TIGHTEST) return shown("%s", name);
+    if (isnan(at->time) || room >= KENT_TIGHTEST) return shown("%s", name);
     return shown(room == KENT_ROOMY ? "%s at %.1f s" : "%s %.1f s", name, at->time);
 }
 

@@ -31,9 +31,9 @@ kent_shown kent_shown_unit(kent_kind kind, kent_system system);
 /* "0+640" (km+m) in SI, "12+34.5" (hundreds of feet + feet) in US. m. */
 kent_shown kent_shown_station(kent_system system, double station);
 
-/* How much room there is: each step says the same in fewer columns, until at last the
- * instant of a load case goes. */
-typedef enum kent_room { KENT_ROOMY, KENT_TIGHT, KENT_TIGHTEST } kent_room;
+/* How much room there is: each step says the same in fewer columns, until the instant
+ * of a load case goes, and at last the word "bend" where a bend says how it turns. */
+typedef enum kent_room { KENT_ROOMY, KENT_TIGHT, KENT_TIGHTEST, KENT_BRIEF } kent_room;
 
 /* Clock direction of a horizontal thrust, rad clockwise from north: "280°" in SI, the
  * quadrant "S 23° E" in US. */

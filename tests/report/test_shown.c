@@ -103,6 +103,46 @@ static void a_size_is_the_class_s_where_the_system_is_its_own(void **state)
     kent_build_clear(&b);
 }
 
+/* "crest" and "sag" are two designs: they outlast the word that a crest implies. */
+static void a_bend_says_how_it_turns_in_whatever_room(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_fitting f = {.type = KENT_BEND, .angle = 45.0 * DEGREE, .branch_size = NAN};
+    f.orientation = KENT_CREST;
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_TIGHTEST).text,
+                        "bend 45.0° crest");
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_BRIEF).text,
+                        "45.0° crest");
+    f.orientation = KENT_HORIZONTAL;
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_BRIEF).text,
+                        "bend 45.0°");
+    kent_build_clear(&b);
+}
+
+static void a_fitting_is_named_by_what_it_serves(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_fitting f = {.type = KENT_TEE, .role = KENT_ROLE_HYDRANT, .branch_size = 0.1};
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_TIGHT).text,
+                        "hydrant tee × 100");
+    f.role = KENT_ROLE_TAPPING;
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_ROOMY).text,
+                        "tapping tee, branch 100");
+    f.type = KENT_GROUP;
+    f.member_count = 2;
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_ROOMY).text,
+                        "group of 2");
+    f = (kent_fitting){.type = KENT_DEAD_END, .role = KENT_ROLE_WASHOUT};
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_ROOMY).text,
+                        "washout end");
+    f = (kent_fitting){.type = KENT_CURVE, .angle = 12.0 * DEGREE};
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_SI, KENT_ROOMY).text,
+                        "curve 12.0°");
+    kent_build_clear(&b);
+}
+
 static void an_assumption_reads_as_a_sentence(void **state)
 {
     (void)state;
@@ -120,6 +160,8 @@ int main(void)
         cmocka_unit_test(a_number_that_rounds_to_nil_has_no_sign),
         cmocka_unit_test(a_push_shows_the_parts_that_count),
         cmocka_unit_test(a_size_is_the_class_s_where_the_system_is_its_own),
+        cmocka_unit_test(a_bend_says_how_it_turns_in_whatever_room),
+        cmocka_unit_test(a_fitting_is_named_by_what_it_serves),
         cmocka_unit_test(an_assumption_reads_as_a_sentence),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
