@@ -205,18 +205,15 @@ static void beside_a_hydrant_the_drain_stays_free(void **state)
 
 /* ---- groups ---------------------------------------------------------------------- */
 
-/* Two bends of 45 degrees, 1.5 m apart and named as one, turn the main by 90 degrees:
- * one block for p A sqrt(2), pushed along the outer bisector; a leg each way for all of
- * it. */
-static void two_bends_as_one_get_one_block_for_the_sum(void **state)
+/* A to B, 45 degrees left to C 1.5 m on, then to E at x, y; B and C are one. */
+static kent_build two_bends(double x, double y)
 {
-    (void)state;
     const double half = 1.5 * sqrt(0.5);
     kent_build b = kent_build_new();
     (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
     (void)kent_build_point(&b, "B", 0.0, 0.0, 50.0);
     (void)kent_build_point(&b, "C", half, half, 50.0);
-    (void)kent_build_point(&b, "E", half, 200.0, 50.0);
+    (void)kent_build_point(&b, "E", x, y, 50.0);
     (void)kent_build_pipe(&b, "P", "A B C E", 0.2, 1000.0);
     (void)kent_build_fixed_level(&b, "A", 150.0);
     (void)kent_build_outflow(&b, "E", 0.0);
@@ -230,6 +227,17 @@ static void two_bends_as_one_get_one_block_for_the_sum(void **state)
     b.model->notes[note].together_first = 0;
     b.model->notes[note].together_count = 1;
     kent_build_derive(&b);
+    return b;
+}
+
+/* Two bends of 45 degrees, 1.5 m apart and named as one, turn the main by 90 degrees:
+ * one block for p A sqrt(2), pushed along the outer bisector; a leg each way for all of
+ * it. */
+static void two_bends_as_one_get_one_block_for_the_sum(void **state)
+{
+    (void)state;
+    const double half = 1.5 * sqrt(0.5);
+    kent_build b = two_bends(half, 200.0);
     kent_restraints *r = kent_hand_size(&b, TEST, 1);
     const int f = kent_build_fitting_of(&b, "B");
     const kent_holding *h = &r->fittings[f];
@@ -240,6 +248,22 @@ static void two_bends_as_one_get_one_block_for_the_sum(void **state)
     assert_int_equal(h->block.type, KENT_BLOCK_BEARING);
     assert_close(h->design_thrust, 1.5 * thrust, 1e-9);
     assert_close(h->block.bearing_area, 1.5 * thrust / 150e3, 1e-9);
+    assert_false(kent_hand_says(h, "couple")); /* their sum runs through the middle */
+    finish(&b, r);
+}
+
+/* Turned back by the second bend: no thrust, but p A x 1.0607 m = 40.3 kN m. */
+static void an_offset_is_said_to_leave_a_couple(void **state)
+{
+    (void)state;
+    const double half = 1.5 * sqrt(0.5);
+    kent_build b = two_bends(200.0, half);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+
+    assert_true(h->needs_nothing);
+    kent_hand_expect(h, "leave a couple of 40.3 kN m before any factor");
+    assert_false(kent_hand_says(h, "nothing is needed"));
     finish(&b, r);
 }
 
@@ -254,6 +278,7 @@ int main(void)
         cmocka_unit_test(a_sleeve_that_no_block_holds_is_offered_no_joints),
         cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
         cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
+        cmocka_unit_test(an_offset_is_said_to_leave_a_couple),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
