@@ -37,6 +37,8 @@ static void materials_have_the_usual_values(void **state)
         assert_close(m->density, ROWS[i].density, 1e-12);
         assert_close(m->roughness, ROWS[i].roughness * 1e-3, 1e-12);
         assert_int_equal(m->plastic, ROWS[i].plastic);
+        const bool mortar = i < 3; /* iron and steel, lined */
+        assert_within(m->lining_modulus, mortar ? 25e9 : 0.0, 1.0);
         assert_int_equal(m->creep_count > 0, ROWS[i].plastic);
         assert_int_equal(m->derating_count > 0, ROWS[i].plastic);
         assert_true(m->from.source[0] != '\0' && m->from.status[0] != '\0');
@@ -83,6 +85,18 @@ static void plastics_are_weaker_when_warm(void **state)
             kent_material_derating(sure_material(c, ROWS[i].id), ROWS[i].kelvin),
             ROWS[i].factor, 2e-4);
     }
+    static const struct {
+        const char *id;
+        double kelvin; /* up to which ratings hold whole */
+    } WHOLE[] = {{"PVC-U", 298.15},
+                 {"PVC-12454", 296.15},
+                 {"PE100", 293.15},
+                 {"PE4710", 299.81666666666666}};
+    for (size_t i = 0; i < sizeof WHOLE / sizeof WHOLE[0]; i++) {
+        const kent_material *m = sure_material(c, WHOLE[i].id);
+        assert_close(kent_material_derating(m, WHOLE[i].kelvin - 0.01), 1.0, 1e-12);
+        assert_true(kent_material_derating(m, WHOLE[i].kelvin + 0.01) < 1.0);
+    }
     for (size_t i = 0; i < sizeof HOT / sizeof HOT[0]; i++) {
         assert_true(
             isnan(kent_material_derating(sure_material(c, HOT[i].id), HOT[i].kelvin)));
@@ -125,6 +139,11 @@ static void pvc_creeps_with_the_logarithm_of_time(void **state)
     for (size_t k = 0; k < 2; k++) {
         const kent_material *m = sure_material(c, IDS[k]);
         assert_int_equal(m->creep_count, 5);
+        for (size_t i = 0; i < m->creep_count;
+             i++) { /* the middles of decades, about */
+            assert_close(m->creep[i].compliance, decade, 0.005);
+            assert_close(m->creep[i].time, 0.03 * pow(10.0, (double)i), 1e-12);
+        }
         for (int n = 0; n <= 5; n++) {
             const double t = 0.01 * pow(10.0, n);
             double grown = 0.0; /* 1/Pa */
