@@ -27,6 +27,14 @@ kent_source kent_factor_source(const kent_model *m, const kent_load_case *c)
     return isnan(m->loads.factor[c->kind]) ? KENT_CATALOGUE : KENT_GIVEN;
 }
 
+const char *kent_factor_says(const kent_model *m, const kent_load_case *c)
+{
+    const bool rules = c->kind == KENT_CASE_TEST && isnan(m->loads.factor[c->kind]) &&
+                       !isnan(m->rules.factor_test);
+    return rules ? "factor of the design rules for the site test"
+                 : "factor of this load case";
+}
+
 /* Whether the sum of the momentum table that stands above is this thrust. */
 static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
 {
@@ -62,7 +70,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
         kent_derivation_put(d, word->part, part, KENT_FORCE, KENT_COMPUTED, word->says);
     }
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
-                        kent_factor_source(w->m, c), "factor of this load case");
+                        kent_factor_source(w->m, c), kent_factor_says(w->m, c));
     kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
                          word->formula_factored, "10.11", "factored load");
     if (sense != h->sense || h->runner_up < 0) return;

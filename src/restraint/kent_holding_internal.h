@@ -57,5 +57,6 @@ void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg
  * from. */
 kent_source kent_soil_source(const kent_soil *soil);
 kent_source kent_factor_source(const kent_model *m, const kent_load_case *c);
+const char *kent_factor_says(const kent_model *m, const kent_load_case *c);
 
 #endif

@@ -127,7 +127,7 @@ static void derive_pull(const kent_holding_work *w, const kent_holding *h,
     kent_derivation_put(d, "T", kent_vec3_length(w->pull), KENT_FORCE, KENT_COMPUTED,
                         says);
     kent_derivation_put(d, "SF", k->factor, KENT_RATIO, kent_factor_source(w->m, c),
-                        "factor of this load case");
+                        kent_factor_says(w->m, c));
     if (!k->bend) return;
     kent_derivation_put(d, "theta", k->angle, KENT_ANGLE, KENT_COMPUTED,
                         "turn of the bend in space");

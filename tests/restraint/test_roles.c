@@ -3,6 +3,8 @@
  */
 #include "kent_hand.h"
 
+#include <math.h>
+#include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -267,6 +269,37 @@ static void an_offset_is_said_to_leave_a_couple(void **state)
     finish(&b, r);
 }
 
+/* ---- factors --------------------------------------------------------------------- */
+
+static const char *says_of_factor(double of_test, double all)
+{
+    static char says[sizeof((kent_line *)NULL)->says];
+    const double half = 1.5 * sqrt(0.5);
+    kent_build b = two_bends(half, 200.0);
+    b.model->rules.factor_test = of_test;
+    b.model->loads.factor[KENT_CASE_TEST] = all;
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+    says[0] = '\0';
+    for (size_t i = 0; i < h->derivation.count && says[0] == '\0'; i++) {
+        const kent_line *line = &h->derivation.lines[i]; /* where it stands first */
+        if (strcmp(line->symbol, "SF") != 0) continue;
+        (void)snprintf(says, sizeof says, "%s", line->says);
+    }
+    finish(&b, r);
+    return says;
+}
+
+static void a_factor_of_the_rules_for_the_test_is_named(void **state)
+{
+    (void)state;
+    const double no = (double)NAN;
+    assert_string_equal(says_of_factor(1.25, no),
+                        "factor of the design rules for the site test");
+    assert_string_equal(says_of_factor(1.25, 1.4), "factor of this load case");
+    assert_string_equal(says_of_factor(no, no), "factor of this load case");
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -279,6 +312,7 @@ int main(void)
         cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
         cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
         cmocka_unit_test(an_offset_is_said_to_leave_a_couple),
+        cmocka_unit_test(a_factor_of_the_rules_for_the_test_is_named),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
