@@ -175,6 +175,25 @@ static void cover_and_water_of_a_zone_count_in_it(void **state)
     finish(&b, r);
 }
 
+/* The ground falls from 1.5 m of cover at C to 0.7 m at E, 200 m on: 1.496 m at the end
+ * of the clay, 1.1 m at that of the till beyond it. */
+static void a_part_goes_by_the_lesser_cover_of_its_ends(void **state)
+{
+    (void)state;
+    kent_build b = main_of_zones();
+    b.model->points[1].cover = 1.5;
+    b.model->points[2].cover = 0.7;
+    (void)zoned(&b, 200.4, 201.0, CLAY);
+    (void)zoned(&b, 201.0, 300.0, TILL);
+    kent_restraints *r = sized(&b);
+    const double first = holds(&b, TILL, 1.5, 0.6),
+                 second = holds(&b, CLAY, 1.496, 0.6);
+    const double third = holds(&b, TILL, 1.1, 0.6);
+    assert_close(at_c(&b, r)->legs[1].length,
+                 1.0 + (demand() - 0.4 * first - 0.6 * second) / third, 1e-7);
+    finish(&b, r);
+}
+
 static void peat_on_the_way_is_passed_through_and_said(void **state)
 {
     (void)state;
@@ -325,6 +344,7 @@ int main(void)
         cmocka_unit_test(a_zone_of_the_same_ground_changes_nothing),
         cmocka_unit_test(a_leg_is_added_up_over_what_it_passes),
         cmocka_unit_test(cover_and_water_of_a_zone_count_in_it),
+        cmocka_unit_test(a_part_goes_by_the_lesser_cover_of_its_ends),
         cmocka_unit_test(peat_on_the_way_is_passed_through_and_said),
         cmocka_unit_test(peat_to_the_end_of_the_pipe_gives_no_length),
         cmocka_unit_test(what_a_soil_on_the_way_lacks_is_named),
