@@ -184,6 +184,7 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
                        "keep the block clear of the hydrant's drain and its gravel "
                        "pocket, bolts and joints");
     }
+    if (h->soil_beside) caution_bearing(w, h);
     if (h->soil_beside && h->held) {
         kent_notes_add(
             &h->cautions,

@@ -104,6 +104,16 @@ static void a_curve_that_cannot_be_judged_is_not_held(void **state)
     finish(&b, r);
 }
 
+static void the_bearing_beside_a_curve_is_doubted_as_any_other(void **state)
+{
+    (void)state;
+    kent_build b = main_that_curves(100.0, 0.0);
+    b.model->soils[0].allowable_bearing = 300e3; /* on 19 kN/m3 x 1.81 m: 8.7 */
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    kent_hand_expect(at_c(&b, r), "asks for a passive coefficient of 8.7");
+    finish(&b, r);
+}
+
 static void every_line_of_a_curve_follows_from_those_above(void **state)
 {
     (void)state;
@@ -306,6 +316,7 @@ int main(void)
         cmocka_unit_test(
             a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius),
         cmocka_unit_test(a_curve_that_cannot_be_judged_is_not_held),
+        cmocka_unit_test(the_bearing_beside_a_curve_is_doubted_as_any_other),
         cmocka_unit_test(every_line_of_a_curve_follows_from_those_above),
         cmocka_unit_test(a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all),
         cmocka_unit_test(a_sleeve_that_no_block_holds_is_offered_no_joints),
