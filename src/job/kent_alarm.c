@@ -21,9 +21,10 @@ typedef struct found {
     double worst_off; /* how far, in whatever measure */
 } found;
 
+enum { NAMED = 6 };
+
 static void find(found *f, const char *id, size_t index, double off)
 {
-    enum { NAMED = 6 };
     if (f->count < NAMED) {
         kent_text_add(&f->names, "%s%s", f->count > 0 ? ", " : "", id);
     }
@@ -31,13 +32,15 @@ static void find(found *f, const char *id, size_t index, double off)
         f->worst = index;
         f->worst_off = off;
     }
-    if (f->count == NAMED) kent_text_add(&f->names, " and others");
     f->count++;
 }
 
 /* Says "NAMES: WHAT", if anything was found, and lets go. */
 static void tell(const watch *w, found *f, const char *kind, const char *what)
 {
+    if (f->count > NAMED) {
+        kent_text_add(&f->names, " and %zu more", f->count - NAMED);
+    }
     if (f->count > 0) {
         kent_notes_add(w->cautions, "%s%s %s: %s", kind, f->count > 1 ? "s" : "",
                        kent_text_of(&f->names), what);

@@ -457,8 +457,8 @@ static void say_counts(const plan *p)
     for (size_t i = 0; i < m->fitting_count; i++) {
         count[m->fittings[i].type]++;
     }
-    kent_text_add(&words, "%zu points, %zu pipes, %zu fittings:", m->point_count,
-                  m->pipe_count, m->fitting_count);
+    kent_text_add(&words, "%zu points, %zu pipe%s, %zu fittings:", m->point_count,
+                  m->pipe_count, m->pipe_count == 1 ? "" : "s", m->fitting_count);
     const char *gap = " ";
     for (int t = 0; t < TYPES; t++) {
         if (count[t] == 0) continue;

@@ -340,6 +340,12 @@ class App(unittest.TestCase):
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 
+    def test_a_member_s_name_finds_the_group(self):
+        case = str(SOURCE / "cases" / "design" / "kettlowe" / "kettlowe.cfg")
+        r = self.call("explain", case, "R1", "--scenario", "zones")
+        self.assertEqual(r.returncode, 0, r.stderr)
+        self.assertTrue(r.stdout.startswith("N2: group of 2"), r.stdout[:100])
+
     def test_the_key_table_is_printed_without_a_case(self):
         r = self.call("check", "--keys")
         self.assertEqual((r.returncode, r.stderr), (0, ""))

@@ -355,7 +355,7 @@ static void many_of_a_kind_are_one_alarm(void **state)
         b.model->pipes[pipe].friction_coefficient = 15.0;
     }
     kent_build_derive(&b);
-    assert_raised(&b, "pipes P1, P2, P3, P4, P5, P6 and others: hazen_williams_c");
+    assert_raised(&b, "pipes P1, P2, P3, P4, P5, P6 and 3 more: hazen_williams_c");
     kent_build_clear(&b);
 }
 

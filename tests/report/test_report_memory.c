@@ -64,11 +64,21 @@ static kent_status explain(const kent_results *r, kent_sink sink)
     return kent_report_explain(r, 0, &OPTIONS, sink);
 }
 
+static kent_status check(const kent_results *r, kent_sink sink)
+{
+    return kent_report_check(r->model, r->steadies, &OPTIONS, sink);
+}
+static kent_status keys(const kent_results *r, kent_sink sink)
+{
+    (void)r;
+    return kent_report_keys(sink);
+}
+
 static void every_refused_allocation_is_said(void **state)
 {
     (void)state;
     kent_status (*const REPORTS[])(const kent_results *r, kent_sink sink) = {
-        tables, wide, summary, json, history, profile, explain};
+        tables, wide, summary, json, history, profile, explain, check, keys};
     kent_mixed mixed = kent_mixed_new(false);
     for (size_t i = 0; i < sizeof REPORTS / sizeof REPORTS[0]; i++) {
         task t = {mixed.results, REPORTS[i]};

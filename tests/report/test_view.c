@@ -136,6 +136,24 @@ static void a_branch_without_a_pipe_is_told_with_its_end(void **state)
     kent_build_clear(&b);
 }
 
+static void fittings_held_as_one_are_told_with_their_members(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    b.model->pipes[0].joint = KENT_FLANGED;
+    const int note = kent_build_note(&b, "P");
+    int *together = kent_alloc(1, sizeof *together);
+    assert_non_null(together);
+    *together = kent_model_point_index(b.model, "E");
+    b.model->together = together;
+    b.model->together_count = 1;
+    b.model->notes[note].together_count = 1;
+    kent_build_derive(&b);
+    assert_says(&b, KENT_SI, " P  group of 2: P, E.");
+    assert_says(&b, KENT_SI, " E  part of P.");
+    kent_build_clear(&b);
+}
+
 /* ---- ground and restraint -------------------------------------------------------- */
 
 static void a_value_of_the_ground_says_whose_it_is(void **state)
@@ -389,7 +407,7 @@ static void a_large_main_is_counted_and_only_what_is_unusual_is_told(void **stat
     kent_build_derive(&b);
     kent_text out = printed(&b, KENT_SI, false);
     const char *text = kent_text_of(&out);
-    assert_non_null(strstr(text, "300 points, 1 pipes, 299 fittings: 298 × bend, 1 × "
+    assert_non_null(strstr(text, "300 points, 1 pipe, 299 fittings: 298 × bend, 1 × "
                                  "dead-end."));
     assert_non_null(strstr(text, " P100  bend 30.0°"));
     assert_null(strstr(text, " P99  "));
@@ -421,6 +439,7 @@ int main(void)
         cmocka_unit_test(a_turn_in_space_is_told_by_its_two_parts),
         cmocka_unit_test(a_turn_that_joints_take_is_no_fitting),
         cmocka_unit_test(a_branch_without_a_pipe_is_told_with_its_end),
+        cmocka_unit_test(fittings_held_as_one_are_told_with_their_members),
         cmocka_unit_test(a_value_of_the_ground_says_whose_it_is),
         cmocka_unit_test(what_was_not_stated_is_said),
         cmocka_unit_test(a_restraint_says_why),
