@@ -225,7 +225,10 @@ static void add_branch(const plan *p, const kent_branch *b, kent_text *out)
 static void add_fitting(const plan *p, const kent_fitting *f, kent_text *out)
 {
     const kent_model *m = p->view->model;
-    kent_text_add(out, "%s", kent_shown_fitting(m, f, p->view->units, KENT_ROOMY).text);
+    const bool valve = f->type == KENT_VALVE && f->valve >= 0; /* told already */
+    kent_text_add(out, "%s",
+                  valve ? "pushed along the pipe when shut"
+                        : kent_shown_fitting(m, f, p->view->units, KENT_ROOMY).text);
     switch (f->type) {
     case KENT_BEND:
         add_bend(p, f, out);
@@ -299,6 +302,7 @@ static void add_ground(const plan *p, const kent_fitting *f, kent_text *out)
 static const char *why_restraint(const kent_fitting *f)
 {
     if (f->within_deflection) return "since the joint takes the turn";
+    if (f->type == KENT_CURVE) return "since it leans on the ground beside it";
     switch (f->restraint) {
     case KENT_THRUST_BLOCK:
         return "since its joints may slip";
@@ -518,9 +522,7 @@ void kent_view_plan(const kent_view *v)
     if (plan_fill(&p)) {
         v->out->failed = true;
     } else if (kent_view_whole(v, m->point_count)) {
-        kent_text_add(v->out,
-                      "\nThe main, point by point (stations as given, else from "
-                      "the start of the pipe)\n");
+        kent_text_add(v->out, "\nThe main, point by point\n");
         for (size_t i = 0; i < m->pipe_count; i++) {
             say_pipe(&p, i);
         }

@@ -346,7 +346,7 @@ static void many_of_a_kind_are_one_alarm(void **state)
     kent_build_point(&b, "P0", 0.0, 0.0, 10.0);
     kent_build_fixed_level(&b, "P0", 40.0);
     for (int i = 1; i <= 9; i++) {
-        char id[8], from_to[16];
+        char id[16], from_to[32];
         (void)snprintf(id, sizeof id, "P%d", i);
         (void)snprintf(from_to, sizeof from_to, "P%d P%d", i - 1, i);
         kent_build_point(&b, id, 100.0 * i, 0.0, 10.0);

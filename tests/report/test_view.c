@@ -260,7 +260,7 @@ static void alike_pipes_are_told_as_one(void **state)
     kent_build_point(&b, "R", 0.0, 0.0, 10.0);
     kent_build_fixed_level(&b, "R", 40.0);
     for (int i = 1; i <= 8; i++) {
-        char id[8], route[16];
+        char id[16], route[32];
         (void)snprintf(id, sizeof id, "P%d", i);
         (void)snprintf(route, sizeof route, i == 1 ? "R P1" : "P%d P%d", i - 1, i);
         kent_build_point(&b, id, 100.0 * i, 0.0, 10.0);
@@ -339,7 +339,9 @@ static void a_valve_goes_from_its_opening_to_another(void **state)
     kent_build_derive(&b);
     assert_says(&b, KENT_SI,
                 "valve V goes from 0.40 open to closed in 5 s, from 1 s on");
-    assert_says(&b, KENT_SI, "open to 0.40, discharging to 5.00 m;");
+    assert_says(
+        &b, KENT_SI,
+        "open to 0.40, discharging to 5.00 m; pushed along the pipe when shut.");
     kent_build_clear(&b);
 }
 
