@@ -17,9 +17,11 @@ static const struct sense_words {
                        "downward thrust"},
 };
 
+/* A soil of the case's own has a line there, whatever report it names as its source. */
 kent_source kent_soil_source(const kent_soil *soil)
 {
-    return strncmp(soil->source, "given", 5) == 0 ? KENT_GIVEN : KENT_CATALOGUE;
+    const bool own = soil->place.line > 0 || strncmp(soil->source, "given", 5) == 0;
+    return own ? KENT_GIVEN : KENT_CATALOGUE;
 }
 
 kent_source kent_factor_source(const kent_model *m, const kent_load_case *c)

@@ -345,6 +345,8 @@ class App(unittest.TestCase):
         r = self.call("explain", case, "R1", "--scenario", "zones")
         self.assertEqual(r.returncode, 0, r.stderr)
         self.assertTrue(r.stdout.startswith("N2: group of 2"), r.stdout[:100])
+        # values of a soils report that the case names are the case's own
+        self.assertIn("unit weight of the soil in place (given)", r.stdout)
 
     def test_the_key_table_is_printed_without_a_case(self):
         r = self.call("check", "--keys")
