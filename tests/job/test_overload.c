@@ -203,7 +203,7 @@ static void many_weak_pipes_are_counted(void **state)
 {
     (void)state;
     kent_build b = kent_build_new();
-    char id[8], route[16];
+    char id[16], route[16];
     for (int i = 0; i <= 10; i++) {
         (void)snprintf(id, sizeof id, "P%d", i);
         kent_build_point(&b, id, 100.0 * i, 0.0, 0.0);
