@@ -174,10 +174,10 @@ done:
 }
 
 /* By its own id, or by that of a point whose fitting is held as one with it. */
-static kent_exit find_fitting(const session *s, int *fitting)
+static kent_exit find_fitting(const session *s, const char *name, int *fitting)
 {
     const kent_model *m = s->model;
-    *fitting = kent_model_fitting_of(m, s->options->fitting);
+    *fitting = kent_model_fitting_of(m, name);
     if (*fitting >= 0) return KENT_EXIT_DONE;
     const char **names = kent_alloc(m->fitting_count, sizeof *names);
     if (!names) {
@@ -187,7 +187,7 @@ static kent_exit find_fitting(const session *s, int *fitting)
     for (size_t i = 0; i < m->fitting_count; i++) {
         names[i] = m->fittings[i].id;
     }
-    say_unknown("fitting", s->options->fitting, names, m->fitting_count);
+    say_unknown("fitting", name, names, m->fitting_count);
     free(names);
     return KENT_EXIT_INPUT;
 }
@@ -330,20 +330,45 @@ static kent_exit command_check(session *s)
     return code;
 }
 
+/* The fittings named, in that order; [*count] indices, the caller's. Without names all
+ * of the main. */
+static kent_exit choose_fittings(session *s, int **fittings, size_t *count)
+{
+    const kent_options *o = s->options;
+    kent_exit code = KENT_EXIT_DONE;
+    *count = o->word_count > 0 ? o->word_count : s->model->fitting_count;
+    *fittings = kent_alloc(*count, sizeof **fittings);
+    if (!*fittings) return fail(s, kent_error_nomem(&s->error));
+    for (size_t i = 0; i < *count; i++) {
+        (*fittings)[i] = (int)i;
+        if (o->word_count == 0) continue;
+        const kent_exit found = find_fitting(s, o->words[i], &(*fittings)[i]);
+        if (!code) code = found;
+    }
+    return code;
+}
+
 static kent_exit command_explain(session *s)
 {
-    int fitting = -1;
+    int *fittings = NULL;
+    size_t count = 0;
     kent_text text = {0};
+    kent_status status = KENT_OK;
     kent_exit code = read_case(s);
-    if (!code) code = find_fitting(s, &fitting);
+    if (!code) code = choose_fittings(s, &fittings, &count);
     if (!code) code = choose_scenarios(s);
     if (!code) code = do_job(s);
-    if (code) return code;
+    if (code) goto done;
     const kent_report_options o = report_options(s);
-    const kent_status status =
-        kent_report_explain(s->results, fitting, &o, kent_output_gather(&text));
+    const kent_sink sink = kent_output_gather(&text);
+    for (size_t i = 0; i < count && !status; i++) {
+        if (i > 0) kent_text_add(&text, "\n");
+        status = kent_report_explain(s->results, fittings[i], &o, sink);
+    }
     code = print_report(s, status, &text);
+done:
     kent_text_clear(&text);
+    free(fittings);
     return code;
 }
 

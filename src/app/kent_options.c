@@ -38,8 +38,8 @@ static const command_row COMMANDS[] = {
     {"run", "one CASE", 1, 1, KENT_RUN, GAVE_ALL},
     {"check", "one CASE", 1, 1, KENT_CHECK,
      GAVE_UNITS | GAVE_WIDE | GAVE_QUIET | GAVE_KEYS},
-    {"explain", "a CASE and a FITTING", 2, 2, KENT_EXPLAIN,
-     GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
+    {"explain", "a CASE and at most 8 FITTINGs", 1, 1 + KENT_OPTIONS_WORDS,
+     KENT_EXPLAIN, GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
     {"catalogue", "a part and at most 8 words", 0, 1 + KENT_OPTIONS_WORDS,
      KENT_CATALOGUE_LIST, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
 };
@@ -57,7 +57,7 @@ static const char ARGUMENTS[] =
     "run CASE\n"
     "check CASE\n"
     "check --keys\n"
-    "explain CASE FITTING\n"
+    "explain CASE [FITTING...]\n"
     "catalogue [pipes|materials|valves|soils|rules [WORD...]]";
 
 static const char DOCUMENT[] =
@@ -69,7 +69,8 @@ static const char DOCUMENT[] =
     "of results\n"
     "check      what was understood of a case: points, pipes, fittings, values "
     "assumed\n"
-    "explain    the numbers of one fitting as a hand calculation\n"
+    "explain    the numbers of every FITTING named, else of all, as a hand "
+    "calculation\n"
     "catalogue  what config/ offers, each row with its source; of one part the rows "
     "that "
     "have every WORD\n"
@@ -235,7 +236,6 @@ static void finish(struct argp_state *state, reading *r)
     }
     r->options->command = c->command;
     if (after > 0) r->options->subject = r->words[1];
-    if (after > 1) r->options->fitting = r->words[2];
     for (size_t i = 2; i < r->word_count; i++) {
         r->options->words[r->options->word_count++] = r->words[i];
     }

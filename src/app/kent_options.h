@@ -28,14 +28,14 @@ typedef enum kent_format {
     KENT_JSON_FORMAT
 } kent_format;
 
-enum { KENT_OPTIONS_WORDS = 8 }; /* that rows of the catalogue may be chosen by */
+enum { KENT_OPTIONS_WORDS = 8 }; /* after the subject, at most */
 
 /* Texts are borrowed from argv. */
 typedef struct kent_options {
     kent_command command;
     const char *subject; /* the case, "-" for standard input; what to list; NULL */
-    const char *fitting; /* of explain */
-    const char *words[KENT_OPTIONS_WORDS]; /* [word_count] of catalogue */
+    const char *words[KENT_OPTIONS_WORDS]; /* [word_count] after it: what rows of the
+                                              catalogue must have; fittings */
     size_t word_count;
     const char *out;        /* folder; NULL: by the case's name */
     const char **scenarios; /* [scenario_count], ours */

@@ -64,7 +64,7 @@ class App(unittest.TestCase):
         for args, words in [
                 ([], "no command"), (["rnu", "main.cfg"], "did you mean 'run'"),
                 (["main.cfg"], "run main.cfg"), (["run"], "one CASE"),
-                (["run", "a", "b"], "one CASE"), (["explain", "main.cfg"], "FITTING"),
+                (["run", "a", "b"], "one CASE"), (["explain"], "FITTING"),
                 (["run", "main.cfg", "--units", "metric"], "SI, US"),
                 (["run", "main.cfg", "--format=xml"], "table, csv, json"),
                 (["run", "main.cfg", "--threads", "0"], "1 to 1024"),
@@ -357,6 +357,26 @@ class App(unittest.TestCase):
             self.assertEqual((r.returncode, r.stdout), (2, ""))
             self.assertIn("--keys", r.stderr)
 
+    @staticmethod
+    def sheets(text, ids):
+        """What `explain` without a name printed, cut at the first line of each sheet."""
+        starts, at = [], 0
+        for name in ids:
+            at = ("\n" + text).index(f"\n{name}: ", at)
+            starts.append(at)
+        return [text[a:b] for a, b in zip(starts, starts[1:] + [len(text)])]
+
+    def test_explain_takes_several_fittings_or_all(self):
+        one, two = (self.call("explain", "main.cfg", f).stdout for f in ("PI1", "E"))
+        r = self.call("explain", "main.cfg", "E", "PI1")
+        self.assertEqual((r.returncode, r.stdout), (0, two + "\n" + one))
+        r = self.call("explain", "main.cfg")
+        self.assertEqual((r.returncode, r.stdout), (0, one + "\n" + two))
+        r = self.call("explain", "main.cfg", "PI2", "PI1", "F")
+        self.assertEqual((r.returncode, r.stdout), (2, ""))
+        for name in ("PI2", "F"):
+            self.assertIn(name, r.stderr)
+
     def test_every_formula_of_every_case_gives_its_printed_result(self):
         cases = sorted((SOURCE / "cases").glob("*/*/*.cfg"))
         self.assertTrue(cases)
@@ -364,14 +384,16 @@ class App(unittest.TestCase):
         for case in cases:
             data = self.call("run", str(case), "--format=json", "--no-files")
             self.assertEqual(data.returncode, 0, data.stderr)
-            for fitting in json.loads(data.stdout)["fittings"]:
-                for units in ("SI", "US"):
-                    text = self.call("explain", str(case), fitting["id"], "--units", units)
-                    self.assertEqual(text.returncode, 0, text.stderr)
-                    r = subprocess.run([WORK_OUT], input=text.stdout, encoding="utf-8",
+            ids = [f["id"] for f in json.loads(data.stdout)["fittings"]]
+            for units in ("SI", "US"):
+                text = self.call("explain", str(case), "--units", units)
+                self.assertEqual(text.returncode, 0, text.stderr)
+                sheets = self.sheets(text.stdout, ids)
+                for name, sheet in zip(ids, sheets, strict=True):
+                    r = subprocess.run([WORK_OUT], input=sheet, encoding="utf-8",
                                        stdout=subprocess.PIPE, stderr=subprocess.STDOUT,
                                        timeout=60)
-                    self.assertEqual(r.returncode, 0, f"{case} {fitting['id']}\n{r.stdout}")
+                    self.assertEqual(r.returncode, 0, f"{case} {name}\n{r.stdout}")
                     worked += int(re.search(r"(\d+) formulas", r.stdout).group(1))
         self.assertGreater(worked, 100)
 
