@@ -316,9 +316,10 @@ bool kent_shown_not_held(const kent_holding *holding)
 /* In a word or two, why nothing holds it; the note under the table says the rest. A
  * soil's name that is too long for a narrow table is left to the note. */
 static kent_shown refusal(const kent_model *m, const kent_fitting *fitting,
-                          kent_room room)
+                          const kent_holding *holding, kent_room room)
 {
     enum { SHORT = 12 };
+    if (holding->turns_over) return shown("none: a couple");
     if (fitting->soil < 0) return shown("none: no soil");
     const kent_soil *soil = &m->soils[fitting->soil];
     if (soil->unreliable) {
@@ -362,7 +363,7 @@ kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
     }
     const bool left = holding->chosen == KENT_NO_RESTRAINT && !holding->soil_beside;
     if (left) return shown("none asked");
-    if (!holding->held) return refusal(m, fitting, room);
+    if (!holding->held) return refusal(m, fitting, holding, room);
     if (holding->soil_beside) return shown("soil beside");
     if (part->face) {
         const double sides[3] = {b->face.width, b->face.height, b->face_thickness};

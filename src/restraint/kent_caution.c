@@ -195,65 +195,35 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
     }
 }
 
-/* N m: the largest couple that the pushes of a group leave in any case, before any
- * factor; NAN: no coordinates tell it. */
-static double group_couple(const kent_holding_work *w)
+/* Pushes whose sum is held may still turn a group a little: no block here is sized for
+ * that (8.15). */
+static void caution_couple(const kent_holding_work *w, kent_holding *h)
 {
-    double most = 0.0;
+    const kent_couple *c = &w->couple;
 
-    for (size_t i = 0; i < w->loads->count; i++) {
-        const kent_load_case *c = &w->loads->cases[i];
-        const kent_instant *at[] = {&c->worst[KENT_RESULTANT], &c->highest};
-        for (size_t k = 0; k < sizeof at / sizeof at[0]; k++) {
-            if (!at[k]->set) continue;
-            const double couple =
-                kent_vec3_length(kent_instant_couple(w->m, w->fitting, at[k]));
-            if (isnan(couple)) return NAN;
-            most = fmax(most, couple);
-        }
-    }
-    return most;
-}
-
-/* Pushes that cancel may still turn a group: no block here is sized for that (8.15). */
-static bool caution_couple(const kent_holding_work *w, kent_holding *h)
-{
-    if (w->fitting->type != KENT_GROUP) return false;
-    const double couple = group_couple(w);
-    if (couple <= KENT_HOLDING_LEAST * w->fitting->outside_diameter) return false;
-    if (isnan(couple)) {
-        kent_notes_add(
-            &h->cautions,
-            "the pushes of these fittings may leave a couple, which cannot be "
-            "told without coordinates: nothing is sized for it");
-    } else {
-        kent_notes_add(
-            &h->cautions,
-            "the pushes of these fittings leave a couple of %s before any "
-            "factor: nothing is sized for it; restrain their joints, or hold "
-            "each by a block of its own",
-            kent_said_of(KENT_MOMENT, w->m->units, couple).s);
-    }
-    return true;
+    if (w->fitting->type != KENT_GROUP || h->turns_over) return;
+    if (c->largest <= KENT_HOLDING_LEAST * w->fitting->outside_diameter) return;
+    kent_notes_add(&h->cautions,
+                   "the pushes of these fittings leave a couple of %s before any "
+                   "factor: nothing is sized for it; write apart = true where they "
+                   "stand, to have each held by itself",
+                   kent_said_of(KENT_MOMENT, w->m->units, c->largest).s);
 }
 
 void kent_holding_caution(kent_holding_work *w, kent_holding *h)
 {
-    const bool turned = caution_couple(w, h);
-
+    caution_couple(w, h);
     if (w->fitting->within_deflection) {
         kent_notes_add(&h->cautions,
                        "a turn of %s is within what the joint takes: listed, not held",
                        kent_said_of(KENT_ANGLE, w->m->units, w->fitting->angle).s);
     } else if (h->needs_nothing) {
         kent_notes_add(&h->cautions,
-                       turned ? "no load case pushes with more than %s"
-                              : "no load case pushes with more than %s: nothing is "
-                                "needed",
+                       "no load case pushes with more than %s: nothing is needed",
                        kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s);
     }
     caution_test_pressure(w, h);
-    if (h->needs_nothing) return;
+    if (h->needs_nothing || h->turns_over) return;
     caution_peak(w, h);
     caution_block(w, h);
     caution_joints(w, h);

@@ -9,6 +9,13 @@
  * weight of half a metre of small pipe. */
 #define KENT_HOLDING_LEAST 500.0
 
+typedef struct kent_couple { /* of a group's pushes, before any factor (8.15) */
+    double largest;          /* N m, over all cases; NAN: no coordinates tell it */
+    size_t governing;        /* whose largest it is */
+    bool apart; /* in some case the line of the force runs past the fittings, or
+                   there is a couple and no force */
+} kent_couple;
+
 typedef struct kent_holding_work { /* borrowed, for one fitting */
     const kent_model *m;
     const kent_fitting *fitting;
@@ -26,6 +33,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     kent_vec3 pull;           /* N, the thrust that the legs are worked out for */
     double pull_factor;
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
+    kent_couple couple;            /* nil but of a group */
     double side_load;              /* N/m, factored, of a curve; NAN */
     double reach;                  /* m, of that wedge at the ground's surface */
     kent_notes clear;              /* obstacles outside it; owned */
@@ -36,7 +44,11 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
  * force of the changing flow. */
 double kent_holding_part(const kent_load_case *c, kent_sense sense);
 
-void kent_holding_find(kent_holding_work *w, kent_holding *h);   /* what governs */
+void kent_holding_find(kent_holding_work *w, kent_holding *h); /* what governs */
+/* What couple the pushes of a group leave, and whether a block on it could hold it.
+ * source docs/theory/10-blocks.md, 10.30 */
+kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,
+                             const kent_fitting_loads *loads);
 void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
 void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */

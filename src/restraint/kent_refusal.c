@@ -303,8 +303,26 @@ static void refuse_curve(const kent_holding_work *w, const kent_holding *h,
     }
 }
 
+/* Held one by one, each member has a thrust of its own, which can be held. */
+static void refuse_couple(const kent_holding_work *w, kent_notes *notes)
+{
+    const double couple = w->couple.largest;
+
+    kent_notes_add(
+        notes,
+        "the pushes of these fittings leave a couple of %s before any factor, and no "
+        "force whose line meets them: no one block holds that. Write apart = true "
+        "where they stand, and no together_with, so that each is held by itself",
+        isnan(couple) ? "unknown size (no coordinates)"
+                      : kent_said_of(KENT_MOMENT, w->m->units, couple).s);
+}
+
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
 {
+    if (h->turns_over) {
+        refuse_couple(w, &h->cautions);
+        return;
+    }
     const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
     const bool soft = w->soil && !kent_soil_counts(w->soil);
     kent_text t = {0};

@@ -59,7 +59,12 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
                                     kent_error *err)
 {
     kent_holding_find(w, h);
-    if (!h->needs_nothing) {
+    w->couple = kent_couple_find(w->m, w->fitting, w->loads);
+    h->turns_over = w->couple.apart;
+    if (h->turns_over) {
+        h->needs_nothing = false;
+        kent_holding_refuse(w, h);
+    } else if (!h->needs_nothing) {
         kent_holding_size(w, h);
         kent_holding_legs(w, h);
         kent_holding_refuse(w, h);

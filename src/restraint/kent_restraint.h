@@ -107,9 +107,10 @@ typedef struct kent_holding {
     double runner_up_load;     /* N, its factored load in the same sense */
     int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
     kent_restraint_choice chosen;
-    bool held;            /* false: nothing here can hold it, or nothing was asked */
-    bool soil_beside;     /* a curve, left to the soil beside it, all along */
-    bool needs_nothing;   /* within joint deflection, or no thrust */
+    bool held;          /* false: nothing here can hold it, or nothing was asked */
+    bool soil_beside;   /* a curve, left to the soil beside it, all along */
+    bool needs_nothing; /* within joint deflection, or no thrust */
+    bool turns_over; /* a group whose pushes leave a couple that nothing here holds */
     double design_thrust; /* N, factored, of the governing case and sense */
     double factor_asked, factor_reached, utilisation; /* NAN where not held */
     kent_block block;

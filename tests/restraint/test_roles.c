@@ -265,7 +265,7 @@ static void two_bends_as_one_get_one_block_for_the_sum(void **state)
 }
 
 /* Turned back by the second bend: no thrust, but p A x 1.0607 m = 40.3 kN m. */
-static void an_offset_is_said_to_leave_a_couple(void **state)
+static void an_offset_is_not_held_by_one_block(void **state)
 {
     (void)state;
     const double half = 1.5 * sqrt(0.5);
@@ -273,10 +273,37 @@ static void an_offset_is_said_to_leave_a_couple(void **state)
     kent_restraints *r = kent_hand_size(&b, TEST, 1);
     const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
 
-    assert_true(h->needs_nothing);
+    assert_false(h->needs_nothing || h->held);
+    assert_true(h->turns_over);
+    assert_int_equal(r->not_held, 1);
     kent_hand_expect(h, "leave a couple of 40.3 kN m before any factor");
-    assert_false(kent_hand_says(h, "nothing is needed"));
+    kent_hand_expect(h, "Write apart = true");
     finish(&b, r);
+}
+
+/* The main goes on at an angle a, so that T = 2 p A sin(a/2) acts along the
+ * bisector through the crossing of the outer legs; by hand, with p A = 38.01 kN and the
+ * bends at (0, 0) and (1.0607, 1.0607), 0.75 + 0.11 m from the middle to the outside:
+ * 45 and 22.5 turned back meet at (-1.500, 0), their force passes the middle at 2.09 m;
+ * 45 and 11.25 on the same hand meet at (0.352, 0), at 0.41 m. */
+static void a_force_that_runs_past_a_group_is_not_held(void **state)
+{
+    (void)state;
+    static const struct {
+        double turns; /* degrees, of the second bend */
+        bool held;
+    } rows[] = {{-45.0, false}, {-40.0, false}, {-22.5, false}, {11.25, true}};
+    const double half = 1.5 * sqrt(0.5);
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        const double on = (45.0 + rows[i].turns) * DEGREE;
+        kent_build b = two_bends(half + 200.0 * cos(on), half + 200.0 * sin(on));
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_true(h->held == rows[i].held);
+        assert_true(h->turns_over == !rows[i].held);
+        assert_int_equal(r->not_held, rows[i].held ? 0 : 1);
+        finish(&b, r);
+    }
 }
 
 /* ---- factors --------------------------------------------------------------------- */
@@ -322,7 +349,8 @@ int main(void)
         cmocka_unit_test(a_sleeve_that_no_block_holds_is_offered_no_joints),
         cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
         cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
-        cmocka_unit_test(an_offset_is_said_to_leave_a_couple),
+        cmocka_unit_test(an_offset_is_not_held_by_one_block),
+        cmocka_unit_test(a_force_that_runs_past_a_group_is_not_held),
         cmocka_unit_test(a_factor_of_the_rules_for_the_test_is_named),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
