@@ -124,6 +124,7 @@ static kent_status tell_unknown(const kent_equations *eq, const int *part, size_
                 ? "give its loss, kv or cv instead, or a fixed level there"
                 : "open it, or give a fixed level there");
     }
+    /* unreached: a part without a fixed level is refused when the model is derived */
     return kent_error_set(err, KENT_E_INPUT, "",
                           "nothing fixes the head at point %s; connect it to a fixed "
                           "level",

@@ -57,6 +57,7 @@ kent_status kent_kernel_pick(const char *wanted, const kent_kernel **out,
             return KENT_OK;
         }
         if (!any) {
+            /* unreached: where the processor has all of them */
             return kent_error_set(err, KENT_E_INPUT, "KENTLEDGE_SIMD",
                                   "this processor lacks %s; unset it or use base",
                                   wanted);

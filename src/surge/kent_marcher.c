@@ -108,6 +108,7 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
         goto done;
     }
     if (grid->node_total > UINT32_MAX) {
+        /* unreached: takes more memory than any test may have */
         (void)kent_error_set(err, status, "", "%zu grid points are too many",
                              grid->node_total);
         goto done;

@@ -3,6 +3,7 @@
 #include "kent_check.h"
 
 #include <math.h>
+#include <stddef.h>
 #include <string.h>
 
 /* R - P - E along x and a branch P - D. */
@@ -41,6 +42,62 @@ static void pipes_without_a_fixed_level_are_refused(void **state)
     (void)state;
     kent_build b = sound();
     assert_refused(&b, "no fixed level", 100);
+}
+
+/* What only a model made by hand can hold: a case's reader says it earlier. */
+static void a_pipe_that_cannot_be_is_refused(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *what;
+        size_t field; /* of kent_pipe */
+        double value;
+    } BAD[] = {
+        {"has no inside diameter", offsetof(kent_pipe, inside_diameter), 0.0},
+        {"length must be above zero", offsetof(kent_pipe, length), 0.0},
+        {"its wave speed is not known", offsetof(kent_pipe, wave_speed), (double)NAN},
+    };
+    for (size_t i = 0; i < sizeof BAD / sizeof BAD[0]; i++) {
+        kent_build b = sound();
+        kent_pipe *pipe = &b.model->pipes[0];
+        kent_build_fixed_level(&b, "R", 50.0);
+        pipe->wall = 0.0;
+        memcpy((char *)pipe + BAD[i].field, &BAD[i].value, sizeof BAD[i].value);
+        assert_refused(&b, BAD[i].what, 100);
+    }
+    kent_build b = sound();
+    kent_build_fixed_level(&b, "R", 50.0);
+    b.model->pipes[1].route_count = 1;
+    assert_refused(&b, "a route needs at least two points", 101);
+}
+
+static void a_note_of_neither_place_nor_ports_is_refused(void **state)
+{
+    (void)state;
+    kent_build b = sound();
+    kent_build_fixed_level(&b, "R", 50.0);
+    noted(&b, "P")->point = -1;
+    assert_refused(&b, "has neither at nor ports", 800);
+}
+
+static void ports_beside_a_place_or_too_many_are_refused(void **state)
+{
+    (void)state;
+    kent_port ports[9];
+    for (int i = 0; i < 9; i++) {
+        const double angle = 0.6 * i; /* rad */
+        ports[i] =
+            kent_build_port((kent_vec3){cos(angle), sin(angle), 0.0}, 1e5, 0.0, 0.3);
+    }
+    kent_build b = kent_build_new();
+    kent_build_ports(&b, "B7", -1, ports, 9);
+    assert_refused(&b, "has 9 ports; at most 8 are known", 800);
+
+    b = sound();
+    kent_build_fixed_level(&b, "R", 50.0);
+    const int note = kent_build_ports(&b, "B7", -1, ports, 2);
+    b.model->notes[note].point = 1;
+    assert_refused(&b, "has both at and ports", 800);
 }
 
 static void a_part_cut_off_is_named(void **state)
@@ -223,6 +280,9 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(pipes_without_a_fixed_level_are_refused),
+        cmocka_unit_test(a_pipe_that_cannot_be_is_refused),
+        cmocka_unit_test(a_note_of_neither_place_nor_ports_is_refused),
+        cmocka_unit_test(ports_beside_a_place_or_too_many_are_refused),
         cmocka_unit_test(a_part_cut_off_is_named),
         cmocka_unit_test(a_long_list_of_points_cut_off_is_shortened),
         cmocka_unit_test(a_shut_valve_cuts_off_what_lies_beyond),

@@ -4,6 +4,7 @@
 #include "kent_check.h"
 
 #include <math.h>
+#include <string.h>
 #include <stdio.h>
 
 /* A line of pipes of the given lengths (m), 1000 m/s each. */
@@ -183,6 +184,8 @@ static void refining_keeps_the_wave_speeds(void **state)
         assert_true(fine->wave_speed_used[i] == g->wave_speed_used[i]);
         assert_true(fine->misses[i] == g->misses[i]);
     }
+    assert_int_equal(kent_grid_refine(g, 3, 0, &fine, &err), KENT_E_INPUT);
+    assert_non_null(strstr(err.what, "cannot be cut in 0 parts each"));
     kent_grid_free(fine);
     kent_grid_free(g);
     kent_build_clear(&b);

@@ -505,6 +505,23 @@ static void beyond_the_stability_limit_the_march_stops_and_says_where(void **sta
     kent_build_clear(&b);
 }
 
+static void a_head_that_is_no_number_stops_the_march(void **state)
+{
+    (void)state;
+    kent_build b;
+    march m = rough_main(&b, 450.0, 0.0);
+    kent_trace trace;
+    kent_error err = {0};
+    m.steady->node_head[1] = NAN;
+    kent_marcher *k = march_marcher(&m, 0, WATCHES, 1, 100);
+    (void)kent_marcher_advance(k, 100, &trace, &err);
+    assert_int_equal(err.status, KENT_E_SOLVE);
+    assert_non_null(strstr(err.what, "no finite head"));
+    kent_marcher_free(k);
+    march_clear(&m);
+    kent_build_clear(&b);
+}
+
 static void a_stiff_span_is_swept_implicitly_and_keeps_its_steady_state(void **state)
 {
     (void)state;
@@ -561,6 +578,24 @@ static void watches_off_their_span_are_refused(void **state)
             kent_marcher_new(b.model, m.steady, m.grid, 0, &w, 1, 1, &k, &err),
             KENT_E_INPUT);
         assert_null(k);
+    }
+    march_clear(&m);
+    kent_build_clear(&b);
+}
+
+static void a_block_of_no_instants_is_refused(void **state)
+{
+    (void)state;
+    static const size_t bad[] = {0, 1025};
+    kent_build b = town(0.0, KENT_SURGE_CONSTANT);
+    march m = march_new(&b, 60.0, 0, WATCHES, 1, 1);
+    for (int i = 0; i < 2; i++) {
+        kent_marcher *k = NULL;
+        kent_error err = {0};
+        assert_int_equal(kent_marcher_new(b.model, m.steady, m.grid, 0, WATCHES, 1,
+                                          bad[i], &k, &err),
+                         KENT_E_INPUT);
+        assert_non_null(strstr(err.what, "instants; 1 .. 1024"));
     }
     march_clear(&m);
     kent_build_clear(&b);
@@ -639,9 +674,11 @@ int main(void)
         cmocka_unit_test(a_stub_leaves_the_surge_what_it_was),
         cmocka_unit_test(a_valve_follows_its_opening_law),
         cmocka_unit_test(beyond_the_stability_limit_the_march_stops_and_says_where),
+        cmocka_unit_test(a_head_that_is_no_number_stops_the_march),
         cmocka_unit_test(a_stiff_span_is_swept_implicitly_and_keeps_its_steady_state),
         cmocka_unit_test(a_reach_too_stiff_for_either_is_refused),
         cmocka_unit_test(watches_off_their_span_are_refused),
+        cmocka_unit_test(a_block_of_no_instants_is_refused),
         cmocka_unit_test(the_vapour_limit_is_met_to_the_centimetre),
         cmocka_unit_test(heads_below_the_vapour_limit_are_counted_and_placed),
     };
