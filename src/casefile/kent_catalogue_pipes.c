@@ -8,7 +8,7 @@ enum { CLASSES_MOST = 16, TOLERANCES_MOST = 8 };
 
 /* Where the wall of a class comes from; NAN: from the row of each size. */
 typedef struct pipe_column {
-    char id[16];
+    char id[KENT_ID];
     double pressure_rating;       /* Pa; NAN */
     double diameter_ratio;        /* outside diameter over wall */
     double wall;                  /* m, one for every size */

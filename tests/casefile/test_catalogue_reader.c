@@ -269,6 +269,36 @@ static void tolerances_may_go_by_the_size(void **state)
     kent_catalogue_free(catalogue);
 }
 
+static void lists_longer_than_is_read_are_refused(void **state)
+{
+    (void)state;
+    char text[2000];
+    char list[1500] = "";
+    size_t used = 0;
+    kent_catalogue *catalogue = NULL;
+    kent_complaints c;
+    for (int i = 1; i <= KENT_CREEP_ROWS + 1; i++) {
+        used +=
+            (size_t)snprintf(list + used, sizeof list - used,
+                             "%s( \"%d s\", \"1e-10 1/Pa\" )", i > 1 ? ", " : "", i);
+    }
+    (void)snprintf(text, sizeof text, MATERIAL "plastic = true; creep = ( %s ); } );\n",
+                   list);
+    assert_int_equal(read_config("materials.cfg", text, &catalogue, &c), KENT_E_INPUT);
+    assert_non_null(strstr(c.kept[0].what, "creep has 9 pairs; at most 8 are read"));
+
+    used = 0;
+    for (int i = 1; i <= 17; i++) {
+        used += (size_t)snprintf(list + used, sizeof list - used, "%s{ id = \"C%d\"; }",
+                                 i > 1 ? ", " : "", i);
+    }
+    (void)snprintf(text, sizeof text,
+                   STANDARD "walls = \"nominal\"; classes = ( %s ); rows = ( ); } );\n",
+                   list);
+    assert_int_equal(read_config("pipes.cfg", text, &catalogue, &c), KENT_E_INPUT);
+    assert_non_null(strstr(c.kept[0].what, "more than 16 classes"));
+}
+
 static void tables_of_pipes_that_make_no_sense_are_refused(void **state)
 {
     (void)state;
@@ -290,6 +320,9 @@ static void tables_of_pipes_that_make_no_sense_are_refused(void **state)
          ");"
          " rows = ( ( 80.0, 90.0, 0.0, 4.0 ) );",
          "pair 2 of tolerances: sizes must rise"},
+        {"classes = ( { id = \"A-class-whose-name-is-far-too-long-for-an-id\"; } ); "
+         "rows = ( ( 80.0, 90.0, 0.0, 4.0 ) );",
+         "ids of row 1 are too long"},
         {"classes = ( { id = \"T\"; }, { id = \"T\"; } ); rows = ( ( 80.0, 90.0, 0.0, "
          "4.0, 5.0 ) );",
          "is given twice"},
@@ -354,6 +387,7 @@ int main(void)
         cmocka_unit_test(creep_and_derating_that_make_no_sense_are_refused),
         cmocka_unit_test(a_table_may_give_ratios_or_one_wall_in_place_of_walls),
         cmocka_unit_test(tolerances_may_go_by_the_size),
+        cmocka_unit_test(lists_longer_than_is_read_are_refused),
         cmocka_unit_test(tables_of_pipes_that_make_no_sense_are_refused),
         cmocka_unit_test(a_type_of_valve_says_something_of_what_it_passes),
         cmocka_unit_test(rules_may_have_a_factor_of_their_own_under_test),

@@ -51,6 +51,19 @@ static void assert_refused(kent_build *b, const char *text, int line)
     kent_build_clear(b);
 }
 
+static void a_curve_does_not_turn_straight_back(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    add(&b, "R", 0.0, NONE, 0.0);
+    add(&b, "P", 100.0, 178.0, 0.0);
+    add(&b, "E", 300.0, NONE, 0.0);
+    b.model->points[1].curve_radius = 2.0;
+    kent_build_pipe(&b, "A", "R P E", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    assert_refused(&b, "no curve turns straight back", 2);
+}
+
 static void stations_and_turns_place_the_points(void **state)
 {
     (void)state;
@@ -253,6 +266,7 @@ static void what_cannot_be_laid_out_is_refused(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_curve_does_not_turn_straight_back),
         cmocka_unit_test(stations_and_turns_place_the_points),
         cmocka_unit_test(levels_give_the_grade_and_bends_in_profile),
         cmocka_unit_test(a_riser_has_one_station_at_foot_and_head),

@@ -69,6 +69,26 @@ static void assert_refused(kent_build *b, const char *text, int line)
     kent_build_clear(b);
 }
 
+/* Two stars of six legs each, 20 m apart, held as one: ten legs lead away. */
+static void a_group_of_more_legs_than_can_be_worked_out_is_refused(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "P", 0.0, 0.0, 10.0);
+    kent_build_point(&b, "Q", 20.0, 0.0, 10.0);
+    kent_build_pipe(&b, "PQ", "P Q", 0.3, 1000.0);
+    for (int i = 0; i < 10; i++) {
+        const char id[] = {(char)('a' + i), '\0'};
+        const char route[] = {i < 5 ? 'P' : 'Q', ' ', (char)('a' + i), '\0'};
+        const double side = i < 5 ? -1.0 : 1.0;
+        kent_build_point(&b, id, 10.0 + side * 60.0, 40.0 * (i % 5 - 2), 10.0);
+        kent_build_pipe(&b, id, route, 0.3, 1000.0);
+    }
+    kent_build_fixed_level(&b, "a", 50.0);
+    name_together(&b, "P", "Q");
+    assert_refused(&b, "10 legs lead out of the 2 fittings held as one", 800);
+}
+
 static void bends_close_together_on_joints_that_hold_are_one(void **state)
 {
     (void)state;
@@ -270,6 +290,7 @@ static void without_coordinates_fittings_are_not_added_up(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_group_of_more_legs_than_can_be_worked_out_is_refused),
         cmocka_unit_test(bends_close_together_on_joints_that_hold_are_one),
         cmocka_unit_test(apart_keeps_them_apart),
         cmocka_unit_test(joints_that_slip_between_are_said_not_joined),
