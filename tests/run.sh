@@ -1,7 +1,8 @@
 #!/bin/sh
 # Installs what is missing, builds with warnings as errors under both compilers, and runs
-# every test: under clang, under the sanitizers, and last under gcc with the checks of the
-# source itself (format, clang-tidy, layers).
+# every test: under clang, under the sanitizers (where the lines run are counted, and none
+# that tells of an error may be left out), and last under gcc with the checks of the source
+# itself (format, clang-tidy, layers).
 set -eu
 root=$(cd "$(dirname "$0")/.." && pwd)
 . "$root/cases/packages.sh"
@@ -25,6 +26,8 @@ build() {
 build clang
 ctest --preset clang -j "$(nproc)"
 build sanitize
+find build-sanitize -name '*.gcda' -delete # counts of this run alone
 ctest --preset sanitize -j "$(nproc)"
+/usr/bin/python3 tests/source/check_error_lines.py build-sanitize .
 build ci
 ctest --preset ci -j "$(nproc)"
