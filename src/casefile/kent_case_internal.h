@@ -49,7 +49,7 @@ kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_
     kent_fill_valve, kent_fill_state, kent_fill_scenario, kent_fill_soil,
     kent_fill_ground_zone, kent_fill_fitting;
 
-/* Of a pipe: the three ratings, de-rated where its material is a warm plastic, and the
+/* Of a pipe: its ratings, de-rated where its material is a warm plastic, and the
  * standard that they are by. row, material: NULL where none is named. */
 void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_class *row,
                        const kent_material *material, kent_pipe *p);

@@ -51,6 +51,19 @@ static void say_warmth(kent_filling *f, kent_record *record,
                          material->id, water, limit);
 }
 
+/* Pipe is marked with what it is rated for when cold, and so may the case be. */
+static void say_taken_warm(kent_filling *f, const kent_record *record,
+                           const kent_material *material, double share)
+{
+    char water[64];
+    kent_fill_show(f, f->model->water.temperature, KENT_TEMPERATURE, water,
+                   sizeof water);
+    kent_notes_add(&f->model->cautions,
+                   "%sthe ratings that the case states are taken to hold at the "
+                   "water's %s; of what is rated cold %s keeps a share of %.3g there",
+                   record->label, water, material->id, share);
+}
+
 /* Ratings of the case hold at the water's temperature; those of the class are for cold
  * water, and a warm plastic keeps a share of them. A rating in service that the case
  * states means that the class's do not hold: not with surge and under test either. */
@@ -66,6 +79,8 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
     } rows[] = {
         {"pressure_rating", holds ? holds->pressure_rating : NAN, &p->pressure_rating},
         {"surge_rating", holds ? holds->surge_rating : NAN, &p->surge_rating},
+        {"recurring_rating", holds ? holds->recurring_rating : NAN,
+         &p->recurring_rating},
         {"test_rating", holds ? holds->test_rating : NAN, &p->test_rating},
     };
     const double share =
@@ -78,6 +93,7 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
         of_class = of_class || (!given && !isnan(rows[i].of_class));
     }
     if (material && isnan(share)) say_warmth(f, record, material);
+    if (material && own && share < 1.0) say_taken_warm(f, record, material, share);
     const bool reduced = of_class && material && material->derating_count > 0;
     if (reduced) assume_share(f, material, share);
     /* One share serves all three: where the case gives some, the others are reduced
@@ -87,6 +103,12 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
         *rows[i].rating =
             kent_record_number_or(record, rows[i].key, here * rows[i].of_class);
+    }
+    /* A plastic tires: a surge rating that says nothing of surges that recur is not
+     * taken to hold for them. */
+    if (material && material->plastic && !isnan(p->surge_rating) &&
+        isnan(p->recurring_rating)) {
+        p->recurring_rating = p->pressure_rating;
     }
 }
 

@@ -17,8 +17,9 @@ typedef struct kent_pipe_class {
     char standard[96];                                   /* "EN 545:2010" */
     double outside_diameter, wall, wall_minimum, lining; /* m; nominal, minimum */
     double pressure_rating;                              /* Pa, in service; NAN */
-    double surge_rating; /* Pa, service and surge together, occasional; NAN */
-    double test_rating;  /* Pa, under the site test; NAN */
+    double surge_rating;     /* Pa, service and surge together, occasional; NAN */
+    double recurring_rating; /* Pa, the same for surges that recur; NAN */
+    double test_rating;      /* Pa, under the site test; NAN */
     kent_provenance from;
 } kent_pipe_class;
 

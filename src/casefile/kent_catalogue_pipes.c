@@ -29,8 +29,9 @@ typedef struct standard {
     double tolerance_of[TOLERANCES_MOST]; /* ... up to which it is so many units */
     size_t tolerance_count;
     bool has_tolerance;
-    double surge_factor, surge_addition, test_addition; /* -, Pa, Pa; NAN */
-    pipe_column columns[CLASSES_MOST];                  /* [class_count] */
+    double surge_factor, recurring_factor; /* NAN */
+    double surge_addition, test_addition;  /* Pa; NAN */
+    pipe_column columns[CLASSES_MOST];     /* [class_count] */
     size_t class_count, walls_in_rows;
 } standard;
 
@@ -119,6 +120,7 @@ static void set_ratings(const standard *s, const pipe_column *c, kent_pipe_class
     const double addition = isnan(s->surge_addition) ? 0.0 : s->surge_addition;
     p->pressure_rating = c->pressure_rating;
     p->surge_rating = surge ? factor * p->pressure_rating + addition : (double)NAN;
+    p->recurring_rating = s->recurring_factor * p->pressure_rating;
     p->test_rating = p->surge_rating + s->test_addition;
 }
 
@@ -194,6 +196,7 @@ void kent_catalogue_add_standard(kent_reader *r, kent_record *record, kent_catal
     standard s = {.common.from = kent_record_provenance(record),
                   .surge_factor = kent_record_number(record, "surge_factor"),
                   .surge_addition = kent_record_number(record, "surge_addition"),
+                  .recurring_factor = kent_record_number(record, "recurring_factor"),
                   .test_addition = kent_record_number(record, "test_addition")};
     kent_record_copy(record, "id", NULL, s.id, sizeof s.id);
     kent_record_copy(record, "before_size", NULL, s.before, sizeof s.before);

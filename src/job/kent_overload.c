@@ -25,7 +25,11 @@ typedef struct judgement {
 static void add_rating(const kent_model *m, const kent_pipe *p, kent_rating rating,
                        kent_text *out)
 {
-    static const char *const UNDER[KENT_RATINGS] = {"", " with surge", " under test"};
+    static const char *const UNDER[KENT_RATINGS] = {
+        "", " with surge", " with surge that recurs", " under test"};
+    if (rating == KENT_RATING_RECURRING && isnan(p->recurring_rating)) {
+        rating = KENT_RATING_SURGE;
+    }
     const bool borrowed = rating == KENT_RATING_SURGE && isnan(p->surge_rating);
     kent_text_add(out, "rated %s%s",
                   kent_said_of(KENT_PRESSURE, m->units, kent_pipe_rating(p, rating)).s,
@@ -144,9 +148,12 @@ static void judge_steady(kent_results *r, size_t state)
 static void judge_march(kent_results *r, const kent_scenario_result *run)
 {
     const kent_model *m = r->model;
-    const char *id = m->scenarios[run->scenario].id;
-    const kent_name name = kent_name_in_state(m, id, run->state);
-    judgement j = {r, name.s, KENT_RATING_SURGE, 0};
+    const kent_scenario *scenario = &m->scenarios[run->scenario];
+    const kent_name name = kent_name_in_state(m, scenario->id, run->state);
+    judgement j = {r, name.s,
+                   scenario->class_of == KENT_RECURRING ? KENT_RATING_RECURRING
+                                                        : KENT_RATING_SURGE,
+                   0};
     for (size_t i = 0; i < m->span_count; i++) {
         const reached at = highest_of_march(m, run, i);
         judge(&j, (int)i, &at);

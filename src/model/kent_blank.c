@@ -34,6 +34,7 @@ kent_pipe kent_pipe_blank(void)
                        .branch_turn = NONE,
                        .pressure_rating = NONE,
                        .surge_rating = NONE,
+                       .recurring_rating = NONE,
                        .test_rating = NONE,
                        .derating = 1.0,
                        .place = {-1, 0}};

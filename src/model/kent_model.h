@@ -81,6 +81,7 @@ typedef struct kent_pipe {
                                 that runs there, where x, y are NAN; NAN */
     double pressure_rating;  /* Pa, in service, as rated; NAN */
     double surge_rating;     /* Pa, service and surge together; NAN */
+    double recurring_rating; /* Pa, the same where the surge recurs; NAN */
     double test_rating;      /* Pa, under the site test; NAN */
     double derating;         /* of a plastic by temperature, on every rating; 1: none */
     size_t creep_first, creep_count; /* into kent_model.creep; 0: elastic */
@@ -677,13 +678,14 @@ const char *kent_axial_support_word(kent_axial_support support);
 /* What a pipe is rated for. */
 typedef enum kent_rating {
     KENT_RATING_SERVICE,
-    KENT_RATING_SURGE, /* service and surge together */
-    KENT_RATING_TEST,  /* the site test */
+    KENT_RATING_SURGE,     /* service and surge together */
+    KENT_RATING_RECURRING, /* the same, in a scenario that recurs */
+    KENT_RATING_TEST,      /* the site test */
     KENT_RATINGS
 } kent_rating;
 
-/* Pa gauge, at the water's temperature; with surge that of service where no other is
- * known. NAN: not known. */
+/* Pa gauge, at the water's temperature; with surge that recurs that with any surge, and
+ * with surge that of service, where no other is known. NAN: not known. */
 double kent_pipe_rating(const kent_pipe *p, kent_rating rating);
 
 /* Whether a joint can slip apart under thrust. */

@@ -9,13 +9,14 @@ static double least_rating(const kent_model *m, const kent_fitting *fitting,
                            kent_rating rating)
 {
     double least = NAN;
-    bool own = rating != KENT_RATING_SURGE;
+    bool own = rating == KENT_RATING_SERVICE || rating == KENT_RATING_TEST;
     for (size_t i = 0; i < fitting->port_count; i++) {
         const int span = m->ports[fitting->port_first + i].span;
         if (span < 0) continue;
         const kent_pipe *pipe = &m->pipes[m->spans[span].pipe];
         least = fmin(least, kent_pipe_rating(pipe, rating)); /* passes over NAN */
-        own = own || !isnan(pipe->surge_rating);
+        own = own || !isnan(rating == KENT_RATING_SURGE ? pipe->surge_rating
+                                                        : pipe->recurring_rating);
     }
     return own ? least : NAN;
 }

@@ -19,9 +19,9 @@ typedef enum kent_pressure {
 
 typedef struct kent_pressures {
     double at[KENT_PRESSURES];   /* Pa; NAN: not there */
-    double rating[KENT_RATINGS]; /* Pa, the least of the pipes that meet; with surge
-                                    and under test only where one has such a rating of
-                                    its own; NAN: not known */
+    double rating[KENT_RATINGS]; /* Pa, the least of the pipes that meet; with surge,
+                                    recurring or not, and under test only where one
+                                    has such a rating of its own; NAN: not known */
     int governs;                 /* kent_pressure; -1: nothing governs */
     int highest_in, lowest_in;   /* index into results' scenarios; -1 */
 } kent_pressures;

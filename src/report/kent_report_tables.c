@@ -347,15 +347,25 @@ static void print_totals(kent_page *page)
 
 /* ---- the table of pressures ------------------------------------------------------ */
 
-/* Whether any pipe has a rating with surge or under test of its own. */
+static bool any_recurs(const kent_model *m)
+{
+    for (size_t i = 0; i < m->scenario_count; i++) {
+        if (m->scenarios[i].class_of == KENT_RECURRING) return true;
+    }
+    return false;
+}
+
+/* Whether any pipe has a rating with surge or under test of its own that something is
+ * held against. */
 static bool has_ratings(const kent_page *page, kent_rating rating)
 {
     const kent_model *m = page->model;
+    if (rating == KENT_RATING_RECURRING && !any_recurs(m)) return false;
     for (size_t i = 0; i < m->pipe_count; i++) {
         const kent_pipe *p = &m->pipes[i];
-        const double own =
-            rating == KENT_RATING_SURGE ? p->surge_rating : p->test_rating;
-        if (!isnan(own)) return true;
+        const double own[KENT_RATINGS] = {p->pressure_rating, p->surge_rating,
+                                          p->recurring_rating, p->test_rating};
+        if (!isnan(own[rating])) return true;
     }
     return false;
 }
@@ -392,11 +402,14 @@ static void print_pressures(kent_page *page)
         {"rating ", bar, KENT_ALIGN_RIGHT, false},
         {"", bar, KENT_ALIGN_RIGHT, false},
         {"", bar, KENT_ALIGN_RIGHT, false},
+        {"", bar, KENT_ALIGN_RIGHT, false},
     };
+    static const char *const HEADS[KENT_RATINGS] = {"rating ", "+surge ", "+often ",
+                                                    "tested "};
     kent_table t = {.columns = columns, .column_count = BEFORE};
     for (int k = KENT_RATING_SURGE; k < KENT_RATINGS; k++) {
         if (!has_ratings(page, (kent_rating)k)) continue;
-        columns[t.column_count++].head = k == KENT_RATING_SURGE ? "+surge " : "tested ";
+        columns[t.column_count++].head = HEADS[k];
     }
     for (size_t i = 0; i < page->model->fitting_count; i++) {
         const size_t f = page->order[i];

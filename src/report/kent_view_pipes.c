@@ -9,7 +9,7 @@
 
 /* ---- alike pipes ----------------------------------------------------------------- */
 
-enum { TRAITS = 26 };
+enum { TRAITS = 27 };
 
 /* What two pipes must share to be told as one, numbers and words apart. */
 typedef struct traits {
@@ -39,6 +39,7 @@ static traits traits_of(const kent_pipe *p)
                      p->laying_length,
                      p->pressure_rating,
                      p->surge_rating,
+                     p->recurring_rating,
                      p->test_rating,
                      p->derating,
                      (double)p->creep_count,
@@ -258,6 +259,7 @@ static void add_ratings(const kent_view *v, const kent_pipe *p, kent_text *out)
         const char *of;
     } ratings[] = {{p->pressure_rating, "in service"},
                    {p->surge_rating, "with surge"},
+                   {p->recurring_rating, "with surge that recurs"},
                    {p->test_rating, "under test"}};
     const char *gap = "Rated ";
     kent_shown s;

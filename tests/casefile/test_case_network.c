@@ -65,7 +65,7 @@ static void a_standard_of_another_edition_is_cautioned(void **state)
 }
 
 /* The catalogue with ductile iron made a plastic: shares 1.00 and 0.80 at 20 and 40
- * degC, one element of creep, and surge rated at 20 bar. */
+ * degC, one element of creep, and surge rated at 20 bar, 18 bar where it recurs. */
 static kent_catalogue *with_a_plastic(void)
 {
     kent_catalogue *c = read_catalogue();
@@ -82,6 +82,7 @@ static kent_catalogue *with_a_plastic(void)
     for (size_t i = 0; i < c->pipe_count; i++) {
         if (strcmp(c->pipes[i].material, "ductile-iron") != 0) continue;
         c->pipes[i].surge_rating = 20e5;
+        c->pipes[i].recurring_rating = 18e5;
         c->pipes[i].test_rating = NAN;
     }
     return c;
@@ -111,6 +112,7 @@ static void ratings_of_a_warm_plastic_are_reduced(void **state)
     assert_close(m->pipes[0].derating, 0.9, 1e-12);
     assert_close(m->pipes[0].pressure_rating, row->pressure_rating, 1e-15);
     assert_close(m->pipes[0].surge_rating, 20e5, 1e-15);
+    assert_close(m->pipes[0].recurring_rating, 18e5, 1e-15);
     const char *note = assumed(m, "share of its ratings that ductile-iron keeps");
     assert_non_null(note);
     assert_memory_equal(note, "0.9\twater at 30 degC; catalogue (",
@@ -121,6 +123,24 @@ static void ratings_of_a_warm_plastic_are_reduced(void **state)
     m = read_warm(c, "30 degC", "pressure_rating = \"16 bar\";");
     assert_close(m->pipes[0].pressure_rating * m->pipes[0].derating, 16e5, 1e-12);
     assert_true(isnan(m->pipes[0].surge_rating) && isnan(m->pipes[0].test_rating));
+    assert_true(isnan(m->pipes[0].recurring_rating));
+    assert_int_equal(
+        cautions_with(m,
+                      "pipe \"A\": the ratings that the case states are taken to hold "
+                      "at the water's 30 degC; of what is rated cold ductile-iron "
+                      "keeps a share of 0.9 there"),
+        1);
+    kent_model_free(m);
+
+    /* A surge rating of the case's own says nothing of surges that recur. */
+    m = read_warm(c, "30 degC",
+                  "pressure_rating = \"16 bar\"; surge_rating = \"19 bar\";");
+    assert_close(m->pipes[0].recurring_rating * m->pipes[0].derating, 16e5, 1e-12);
+    kent_model_free(m);
+    m = read_warm(c, "30 degC",
+                  "pressure_rating = \"16 bar\"; surge_rating = \"19 bar\"; "
+                  "recurring_rating = \"17 bar\";");
+    assert_close(m->pipes[0].recurring_rating * m->pipes[0].derating, 17e5, 1e-12);
     kent_model_free(m);
 
     /* Where it rates surge alone, the rest is the class's, reduced. */
@@ -133,6 +153,10 @@ static void ratings_of_a_warm_plastic_are_reduced(void **state)
     m = read_warm(c, "20 degC", "");
     assert_close(m->pipes[0].derating, 1.0, 1e-15);
     assert_null(assumed(m, "share of its ratings that ductile-iron keeps"));
+    kent_model_free(m);
+
+    m = read_warm(c, "20 degC", "pressure_rating = \"16 bar\";");
+    assert_int_equal(cautions_with(m, "taken to hold"), 0);
     kent_model_free(m);
     kent_catalogue_free(c);
 }

@@ -225,8 +225,8 @@ static void a_table_may_give_ratios_or_one_wall_in_place_of_walls(void **state)
     const kent_pipe_class *p = first_pipe(
         STANDARD
         "walls = \"minimum\"; tolerance_per_wall = 0.1; tolerance = \"1 mm\";\n"
-        "surge_factor = 1.5; surge_addition = \"2 bar\"; test_addition = \"3 "
-        "bar\";\n"
+        "surge_factor = 1.5; surge_addition = \"2 bar\"; recurring_factor = 1.25;\n"
+        "test_addition = \"3 bar\";\n"
         "classes = ( { id = \"R\"; diameter_ratio = 10.0; pressure_rating = "
         "\"8 bar\"; least_size = 100.0; }, { id = \"W\"; wall = \"5 mm\"; "
         "most_size = 100.0; }, { id = \"T\"; } );\n"
@@ -246,6 +246,7 @@ static void a_table_may_give_ratios_or_one_wall_in_place_of_walls(void **state)
         assert_close(p[i].wall, 1e-3 * ROWS[i].mean, 1e-12);
     }
     assert_close(p[2].surge_rating, 14e5, 1e-12);
+    assert_close(p[2].recurring_rating, 10e5, 1e-12);
     assert_close(p[2].test_rating, 17e5, 1e-12);
     assert_true(isnan(p[0].surge_rating)); /* no rating in service */
     kent_catalogue_free(catalogue);

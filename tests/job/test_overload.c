@@ -155,6 +155,44 @@ static void a_scenario_is_held_against_the_rating_with_surge(void **state)
     kent_build_clear(&b);
 }
 
+/* A surge that happens every day tires the pipe: what it is rated for now and then does
+ * not serve. Without a rating of its own it is held as any surge. */
+static void a_scenario_that_recurs_is_held_against_its_own_rating(void **state)
+{
+    (void)state;
+    kent_build b = sagging_main();
+    kent_pipe *p = &b.model->pipes[0];
+    p->pressure_rating = 4e5;
+    p->surge_rating = 1e9;
+    p->recurring_rating = 4.2e5;
+    kent_results *r = run(&b);
+    assert_false(r->limit_exceeded); /* it happens now and then */
+    kent_results_free(r);
+
+    b.model->scenarios[0].class_of = KENT_RECURRING;
+    r = run(&b);
+    assert_non_null(
+        caution(r, "in shut, rated 4.20 bar with surge that recurs (EN 545:2010)"));
+    assert_true(r->limit_exceeded);
+    kent_results_free(r);
+
+    p->derating = 0.99;
+    r = run(&b);
+    assert_non_null(caution(r, "in shut, rated 4.16 bar with surge that recurs"));
+    kent_results_free(r);
+
+    p->recurring_rating = NAN;
+    p->derating = 1.0;
+    r = run(&b);
+    assert_false(r->limit_exceeded);
+    kent_results_free(r);
+    p->surge_rating = 4.1e5;
+    r = run(&b);
+    assert_non_null(caution(r, "in shut, rated 4.10 bar with surge (EN 545:2010)"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 /* 6 bar at R are 6 bar and 10 m of water, 6.98 bar, at D. */
 static void the_test_is_held_against_its_own_rating_by_elevation(void **state)
 {
@@ -233,6 +271,7 @@ int main(void)
         cmocka_unit_test(a_warm_plastic_keeps_a_share_of_its_rating),
         cmocka_unit_test(steady_flow_is_held_against_it_in_every_state),
         cmocka_unit_test(a_scenario_is_held_against_the_rating_with_surge),
+        cmocka_unit_test(a_scenario_that_recurs_is_held_against_its_own_rating),
         cmocka_unit_test(the_test_is_held_against_its_own_rating_by_elevation),
         cmocka_unit_test(a_pipe_without_a_rating_is_named),
         cmocka_unit_test(many_weak_pipes_are_counted),

@@ -47,6 +47,27 @@ static void test_pressure_is_carried_by_elevation(void **state)
     kent_mixed_clear(&mixed);
 }
 
+/* Of the pipes that meet the least counts; where only one has a rating with surge that
+ * of the other in service stands beside it. */
+static void ratings_with_surge_are_the_least_of_the_pipes_that_meet(void **state)
+{
+    (void)state;
+    kent_mixed mixed = kent_mixed_new(false);
+    kent_model *m = mixed.build.model;
+    const size_t crest = (size_t)kent_build_fitting_of(&mixed.build, "CR");
+    const kent_port *port = &m->ports[m->fittings[crest].port_first];
+    kent_pipe *p = &m->pipes[m->spans[port->span].pipe];
+    p->surge_rating = 24e5;
+    kent_pressures at = kent_pressures_of(mixed.results, crest);
+    assert_close(at.rating[KENT_RATING_SURGE], 24e5, 0.0);
+    assert_true(isnan(at.rating[KENT_RATING_RECURRING]) != 0);
+    p->recurring_rating = 23e5;
+    at = kent_pressures_of(mixed.results, crest);
+    assert_close(at.rating[KENT_RATING_SURGE], 24e5, 0.0);
+    assert_close(at.rating[KENT_RATING_RECURRING], 23e5, 0.0);
+    kent_mixed_clear(&mixed);
+}
+
 static void a_fitting_with_ports_of_its_own_has_only_what_was_given(void **state)
 {
     (void)state;
@@ -86,6 +107,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(the_highest_is_that_of_the_scenario_named),
         cmocka_unit_test(test_pressure_is_carried_by_elevation),
+        cmocka_unit_test(ratings_with_surge_are_the_least_of_the_pipes_that_meet),
         cmocka_unit_test(a_fitting_with_ports_of_its_own_has_only_what_was_given),
         cmocka_unit_test(the_extremes_of_the_main_bound_every_point),
     };

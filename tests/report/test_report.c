@@ -94,6 +94,32 @@ static void the_tables_say_what_an_engineer_must_know(void **state)
     kent_mixed_clear(&mixed);
 }
 
+/* A rating is a column where a pipe has it and something is held against it. */
+static void ratings_have_columns_where_something_is_held_against_them(void **state)
+{
+    (void)state;
+    kent_mixed mixed = kent_mixed_new(false);
+    kent_model *m = mixed.build.model;
+    const kent_report_options o = {.units = KENT_SI};
+    for (int given = 0; given < 2; given++) {
+        for (int recurs = 0; recurs < 2; recurs++) {
+            const double rating = given ? 27e5 : (double)NAN;
+            kent_text out = {0};
+            m->scenarios[1].class_of = recurs ? KENT_RECURRING : KENT_OCCASIONAL;
+            m->pipes[0].surge_rating = m->pipes[0].test_rating = rating;
+            m->pipes[0].recurring_rating = rating;
+            assert_int_equal(
+                kent_report_tables(mixed.results, &o, kent_mixed_sink(&out)), KENT_OK);
+            const char *text = kent_text_of(&out);
+            assert_int_equal(strstr(text, " +surge") != NULL, given);
+            assert_int_equal(strstr(text, " tested") != NULL, given);
+            assert_int_equal(strstr(text, " +often") != NULL, given && recurs);
+            kent_text_clear(&out);
+        }
+    }
+    kent_mixed_clear(&mixed);
+}
+
 static void what_cannot_be_held_stands_first(void **state)
 {
     (void)state;
@@ -660,6 +686,7 @@ int main(void)
         cmocka_unit_test(nothing_printed_is_wider_than_a_hundred_columns),
         cmocka_unit_test(wide_cuts_nothing_short),
         cmocka_unit_test(the_tables_say_what_an_engineer_must_know),
+        cmocka_unit_test(ratings_have_columns_where_something_is_held_against_them),
         cmocka_unit_test(what_cannot_be_held_stands_first),
         cmocka_unit_test(every_line_of_a_hand_calculation_can_be_worked_out_again),
         cmocka_unit_test(check_lists_all_that_was_understood),
