@@ -3,9 +3,11 @@
 #include "kent_alloc.h"
 
 #include <stdarg.h>
+#include <stdint.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+#include <strings.h>
 
 void kent_text_add(kent_text *t, const char *fmt, ...)
 {
@@ -141,4 +143,13 @@ size_t kent_text_distance(const char *a, const char *b)
         }
     }
     return row[b_count] + (a_beyond > b_beyond ? a_beyond : b_beyond);
+}
+
+size_t kent_text_misspelling(const char *known, const char *word)
+{
+    const size_t length = strlen(word), other = strlen(known);
+    const size_t longest = length > other ? length : other;
+    if (strcasecmp(known, word) == 0) return 0;
+    const size_t edits = kent_text_distance(known, word);
+    return edits < length / 3 + 2 && edits < longest ? edits : SIZE_MAX;
 }

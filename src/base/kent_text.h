@@ -31,4 +31,8 @@ size_t kent_text_number(const char *text);
 /* Smallest number of single-letter edits that turns a into b (for "did you mean"). */
 size_t kent_text_distance(const char *a, const char *b);
 
+/* The edits that turn a misspelt word into a known one, none where only capitals
+ * differ; SIZE_MAX: so many that it is another word. */
+size_t kent_text_misspelling(const char *known, const char *word);
+
 #endif

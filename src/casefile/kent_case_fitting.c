@@ -186,7 +186,8 @@ static void fill_obstacles(kent_filling *f, kent_record *record, kent_fitting_no
 /* What only a fitting found from geometry can have. */
 static bool suits_ports(kent_filling *f, kent_record *record)
 {
-    static const char *const KEYS[] = {"branch", "together_with", "apart"};
+    static const char *const KEYS[] = {"branch", "together_with", "apart", "angle",
+                                       "orientation"};
     for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
         if (!kent_record_has(record, KEYS[i])) continue;
         kent_record_complain(

@@ -69,6 +69,13 @@ static void check_soil(kent_filling *f, kent_record *record, const kent_soil *s)
                              "pressure follows",
                              isnan(s->unit_weight) ? "unit_weight"
                                                    : "friction_angle or cohesion");
+    } else if (s->route == KENT_BEARING_PASSIVE && !(s->friction_angle > 0.0) &&
+               !(s->cohesion > 0.0)) {
+        kent_record_complain(
+            &f->reader, record, "passive_share",
+            "passive_share is of the earth pressure that friction_angle "
+            "and cohesion give, and both are nil; give the soil's "
+            "strength, or its bearing in another way");
     } else if (gives_bearing(record) && !kent_record_has(record, "factor_inside") &&
                !unbearing) {
         char what[96];

@@ -78,6 +78,10 @@ void kent_fill_outflow(kent_filling *f, kent_record *record, size_t index)
             &f->reader, record, "pressure_dependent",
             "pressure_dependent needs full_pressure, at which the whole "
             "flow is drawn");
+    } else if (!o->pressure_dependent && !isnan(o->full_pressure)) {
+        kent_record_complain(&f->reader, record, "full_pressure",
+                             "full_pressure is of an outflow with pressure_dependent = "
+                             "true; write that too, or leave it out");
     } else if (o->pressure_dependent && o->flow < 0.0) {
         kent_record_complain(&f->reader, record, "flow",
                              "a flow into the main cannot be pressure_dependent");

@@ -1,6 +1,8 @@
 /* States: the steady flows that scenarios start from. */
 #include "kent_case_internal.h"
 
+#include "kent_said.h"
+
 #include <math.h>
 #include <stdio.h>
 
@@ -9,10 +11,10 @@ static bool level_in_range(kent_filling *f, kent_record *record, double level)
     char range[80];
     const kent_key *key = kent_key_find("fixed_level", "level");
     if (level >= key->least && level <= key->most) return true;
-    kent_key_range(key, range, sizeof range);
+    kent_key_range(key, f->reader.system, range, sizeof range);
     kent_record_complain(&f->reader, record, "levels",
-                         "levels: %.6g m is out of range; the range is %s", level,
-                         range);
+                         "levels: %s is out of range; the range is %s",
+                         kent_said_of(KENT_LENGTH, f->reader.system, level).s, range);
     return false;
 }
 

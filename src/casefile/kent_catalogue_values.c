@@ -90,6 +90,7 @@ static void read_by_depth(kent_reader *r, kent_record *record, kent_soil *soil)
     double depth[KENT_DEPTH_ROWS];
     double bearing[KENT_DEPTH_ROWS];
     const char *key = "bearing_by_depth";
+    const kent_key *most = kent_key_find("soil", "allowable_bearing");
     const size_t count = kent_record_pairs(r, record, key, KENT_LENGTH, KENT_STRESS,
                                            KENT_DEPTH_ROWS, depth, bearing);
     if (!record->sound) return;
@@ -106,6 +107,15 @@ static void read_by_depth(kent_reader *r, kent_record *record, kent_soil *soil)
                                  "pair %zu of bearing_by_depth: depths must rise from "
                                  "above 0 m, bearings not be negative",
                                  i + 1);
+            return;
+        }
+        if (bearing[i] > most->most) {
+            char range[80];
+            kent_key_range(most, r->system, range, sizeof range);
+            kent_record_complain(r, record, key,
+                                 "pair %zu of bearing_by_depth: the bearing is out of "
+                                 "range; the range is %s",
+                                 i + 1, range);
             return;
         }
         soil->by_depth[i] = (kent_depth_row){depth[i], bearing[i]};
@@ -158,6 +168,7 @@ static void read_passive_ratios(kent_reader *r, kent_record *record, kent_soil *
     const char *key = "passive_ratios";
     const kent_twig *list = kent_record_field(record, key)->twig;
     const size_t count = list ? kent_twig_count(list) : 0;
+    bool seen[KENT_TRENCHES] = {false};
     for (size_t i = 0; i < count; i++) {
         const kent_twig *pair = kent_twig_child(list, i);
         const bool is_pair =
@@ -173,6 +184,13 @@ static void read_passive_ratios(kent_reader *r, kent_record *record, kent_soil *
                                  i + 1);
             return;
         }
+        if (seen[trench]) {
+            kent_record_complain(r, record, key,
+                                 "passive_ratios names \"%s\" twice; keep one",
+                                 kent_trench_word(trench));
+            return;
+        }
+        seen[trench] = true;
         soil->passive_by_trench[trench] = ratio;
     }
 }

@@ -1,5 +1,6 @@
 #include "kent_directory.h"
 
+#include <stdint.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -45,9 +46,9 @@ int kent_directory_find(const kent_directory *d, const char *id)
 const char *kent_directory_nearest(const kent_directory *d, const char *id)
 {
     const char *best = NULL;
-    size_t least = strlen(id) / 3 + 2; /* further away than that is another word */
+    size_t least = SIZE_MAX;
     for (size_t i = 0; i < d->count; i++) {
-        const size_t distance = kent_text_distance(d->entries[i].id, id);
+        const size_t distance = kent_text_misspelling(d->entries[i].id, id);
         if (distance < least) {
             least = distance;
             best = d->entries[i].id;

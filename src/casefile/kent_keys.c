@@ -2,6 +2,7 @@
 #include "kent_base.h"
 
 #include <math.h>
+#include <stdint.h>
 #include <stdio.h>
 #include <string.h>
 
@@ -710,9 +711,9 @@ const char *kent_key_nearest(const char *group, const char *key)
     size_t count = 0;
     const kent_key *keys = kent_key_group(group, &count);
     const char *best = NULL;
-    size_t least = strlen(key) / 3 + 2; /* further away than that is another word */
+    size_t least = SIZE_MAX;
     for (size_t i = 0; i < count; i++) {
-        const size_t distance = kent_text_distance(keys[i].key, key);
+        const size_t distance = kent_text_misspelling(keys[i].key, key);
         if (distance < least) {
             least = distance;
             best = keys[i].key;
@@ -721,30 +722,33 @@ const char *kent_key_nearest(const char *group, const char *key)
     return best;
 }
 
-void kent_key_range(const kent_key *key, char *out, size_t size)
+void kent_key_range(const kent_key *key, kent_system system, char *out, size_t size)
 {
     const bool quantity =
         key->value == KENT_VALUE_QUANTITY || key->value == KENT_VALUE_EITHER;
     const kent_kind kind = key->value == KENT_VALUE_QUANTITY ? key->kind : KENT_RATIO;
     const bool has_number =
         quantity || key->value == KENT_VALUE_NUMBER || key->value == KENT_VALUE_COUNT;
-    const kent_display shown = kent_units_display(kind, KENT_SI);
+    const kent_display shown = kent_units_display(kind, system);
     const char *gap = shown.unit[0] != '\0' ? " " : "";
-    const double least = kent_units_shown(kind, KENT_SI, key->least);
-    const double most = kent_units_shown(kind, KENT_SI, key->most);
+    const double least = kent_units_shown(kind, system, key->least);
+    const int digits = system == KENT_SI ? 9 : 6; /* limits are round numbers of SI */
+    const double most = kent_units_shown(kind, system, key->most);
 
     if (key->value == KENT_VALUE_TEXT && isfinite(key->most)) {
         (void)snprintf(out, size, "up to %g bytes", key->most);
     } else if (!has_number || (isinf(key->least) && isinf(key->most))) {
         (void)snprintf(out, size, "any");
     } else if (isinf(key->most)) {
-        (void)snprintf(out, size, "%s %.9g%s%s",
-                       key->above_least ? "above" : "at least", least, gap, shown.unit);
+        (void)snprintf(out, size, "%s %.*g%s%s",
+                       key->above_least ? "above" : "at least", digits, least, gap,
+                       shown.unit);
     } else if (key->least == key->most) {
-        (void)snprintf(out, size, "%.9g%s%s", most, gap, shown.unit);
+        (void)snprintf(out, size, "%.*g%s%s", digits, most, gap, shown.unit);
     } else {
-        (void)snprintf(out, size, "%s%.9g to %.9g%s%s",
-                       key->above_least ? "above " : "", least, most, gap, shown.unit);
+        (void)snprintf(out, size, "%s%.*g to %.*g%s%s",
+                       key->above_least ? "above " : "", digits, least, digits, most,
+                       gap, shown.unit);
     }
 }
 

@@ -53,14 +53,15 @@ bool kent_key_is_now(const kent_key *key);
 /* Whether leaving it out is an error. */
 bool kent_key_is_required(const kent_key *key);
 
-/* The range in the display unit of its kind: "0 to 100 m", "above 0 to 20000 mm",
- * "any". */
-void kent_key_range(const kent_key *key, char *out, size_t size);
+/* The range in the system's display unit of its kind: "0 to 100 m", "above 0 to 20000
+ * mm", "any". */
+void kent_key_range(const kent_key *key, kent_system system, char *out, size_t size);
 
 /* "a pipe", "water": a group as messages name it. */
 const char *kent_key_group_word(const char *group);
 
-/* The key of the group nearest to a misspelt one; NULL: none is near. */
+/* The key of the group nearest to a misspelt one, capitals or not; NULL: none is near.
+ */
 const char *kent_key_nearest(const char *group, const char *key);
 
 /* Spelling variants of one word ("catalog", "vapor", "non-return", "taper") to ours. */

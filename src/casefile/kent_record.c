@@ -4,6 +4,7 @@
 #include <math.h>
 #include <stdarg.h>
 #include <stdio.h>
+#include <stdint.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -90,7 +91,7 @@ static void check_range(kent_reader *r, kent_record *record, const kent_key *key
     char range[80];
     char shown[80];
     if (in_range(key, value)) return;
-    kent_key_range(key, range, sizeof range);
+    kent_key_range(key, r->system, range, sizeof range);
     show(twig, shown, sizeof shown);
     complain(r, record, twig, "%s = %s is out of range; the range is %s", key->key,
              shown, range);
@@ -352,13 +353,13 @@ static int word_index(const char *words, const char *word, bool *later)
 /* The word of this version nearest to a misspelt one, into out; "": none is near. */
 static void nearest_word(const char *words, const char *word, char *out, size_t size)
 {
-    size_t least = strlen(word) / 3 + 2;
+    size_t least = SIZE_MAX;
     out[0] = '\0';
     for (const char *p = words; p;) {
         const size_t length = strcspn(p, "|");
         char candidate[40];
         (void)snprintf(candidate, sizeof candidate, "%.*s", (int)length, p);
-        const size_t distance = kent_text_distance(candidate, word);
+        const size_t distance = kent_text_misspelling(candidate, word);
         if (p[0] != '~' && distance < least) {
             least = distance;
             (void)snprintf(out, size, "%s", candidate);
@@ -436,14 +437,14 @@ static void vector(kent_reader *r, kent_record *record, const kent_key *key,
 
 /* Of each kent_station_style: what the numbers before and after the + count. */
 static const struct {
-    double large;      /* m, what the number before the + counts */
-    double small;      /* m, what the number after it counts */
-    double most;       /* the number after it stays below that */
-    const char *shape; /* for people */
+    double large;                         /* m, what the number before the + counts */
+    double small;                         /* m, what the number after it counts */
+    double most;                          /* the number after it stays below that */
+    const char *style, *example, *length; /* for people */
 } STATIONS[] = {
-    [KENT_KM_M] = {1000.0, 1.0, 1000.0, "km+m, as \"1+198\""},
-    [KENT_100M_M] = {100.0, 1.0, 100.0, "100m+m, as \"11+98.5\""},
-    [KENT_100FT_FT] = {30.48, 0.3048, 100.0, "100ft+ft, as \"12+34.5\""},
+    [KENT_KM_M] = {1000.0, 1.0, 1000.0, "km+m", "1+198", "1198 m"},
+    [KENT_100M_M] = {100.0, 1.0, 100.0, "100m+m", "11+98.5", "1198.5 m"},
+    [KENT_100FT_FT] = {30.48, 0.3048, 100.0, "100ft+ft", "12+34.5", "1234.5 ft"},
 };
 
 /* "1+198" by the reader's station_style, or a length. */
@@ -465,15 +466,16 @@ static void station(kent_reader *r, kent_record *record, const kent_key *key,
         kent_units_read(r->units, after, KENT_RATIO, &part, &err) != KENT_OK) {
         if (err.status == KENT_E_NOMEM) r->failed = true;
         complain(r, record, f->twig,
-                 "%s = \"%.40s\" is no station; write \"1+198\" or a length, as "
-                 "\"1198 m\"",
-                 key->key, s);
+                 "%s = \"%.40s\" is no station; write \"%s\" or a length, as \"%s\"",
+                 key->key, s, STATIONS[r->station_style].example,
+                 STATIONS[r->station_style].length);
     } else if (part >= STATIONS[r->station_style].most) {
-        complain(r, record, f->twig,
-                 "%s = \"%.40s\" is no station of style %s: what follows the + stays "
-                 "below %g; site.station_style says how stations are written",
-                 key->key, s, STATIONS[r->station_style].shape,
-                 STATIONS[r->station_style].most);
+        complain(
+            r, record, f->twig,
+            "%s = \"%.40s\" is no station of style %s, as \"%s\": what follows the "
+            "+ stays below %g; site.station_style says how stations are written",
+            key->key, s, STATIONS[r->station_style].style,
+            STATIONS[r->station_style].example, STATIONS[r->station_style].most);
     } else {
         f->number = STATIONS[r->station_style].large * (double)strtol(s, NULL, 10) +
                     STATIONS[r->station_style].small * part;

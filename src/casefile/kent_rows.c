@@ -97,10 +97,11 @@ static bool split_heading(kent_reader *r, const kent_rows *t, int line, char *he
     const bool whole = open[0] == '[' && open[length - 1] == ']' && length > 2 &&
                        length - 2 <= UNIT_MOST && open > heading;
     if (!whole) {
-        complain(r, t, line,
-                 "heading '%.60s' cannot be read; a unit stands in brackets after its "
-                 "key, as 'z [m]'",
-                 heading);
+        complain(
+            r, t, line,
+            "heading '%.60s' cannot be read; a unit stands in square brackets after "
+            "its key, as 'z [m]'",
+            heading);
         return false;
     }
     memcpy(c->unit, open + 1, length - 2);
@@ -127,9 +128,11 @@ static void check_unit(kent_reader *r, const kent_rows *t, int line, const colum
     const kent_status status = kent_units_read(r->units, one, kind, &si, &err);
     if (status == KENT_E_NOMEM) r->failed = true;
     if (status == KENT_E_INPUT) { /* its example is of a cell */
+        const char *example = strrchr(err.what, ';');
+        const int said = (int)(example ? example - err.what : 0);
         complain(r, t, line, "heading '%s [%s]': %.*s; write for instance '%s [%s]'",
-                 c->key->key, c->unit, (int)strcspn(err.what, ";"), err.what,
-                 c->key->key, usual_unit(r, kind));
+                 c->key->key, c->unit, said, err.what, c->key->key,
+                 usual_unit(r, kind));
     }
 }
 
@@ -197,8 +200,14 @@ static void check_required(kent_reader *r, const kent_rows *t, int line)
 /* What people put between thousands, other than commas and points. */
 static size_t thousands_mark(const char *p)
 {
-    static const char *const MARKS[] = {
-        " ", "'", "\xC2\xA0", "\xE2\x80\xAF", "\xE2\x80\x89", "\xE2\x80\x99"};
+    static const char *const MARKS[] = {" ",
+                                        "'",
+                                        "_",
+                                        "\xC2\xA0",
+                                        "\xE2\x80\x87",
+                                        "\xE2\x80\xAF",
+                                        "\xE2\x80\x89",
+                                        "\xE2\x80\x99"};
     for (size_t i = 0; i < sizeof MARKS / sizeof MARKS[0]; i++) {
         const size_t n = strlen(MARKS[i]);
         if (strncmp(p, MARKS[i], n) == 0) return n;
@@ -207,6 +216,8 @@ static size_t thousands_mark(const char *p)
 }
 
 static bool is_digit(char c) { return c >= '0' && c <= '9'; }
+
+static bool are_thousands(const char *p) { return strspn(p, "0123456789") == 3; }
 
 /* How a number is written; a decimal comma becomes a point. */
 static void check_marks(kent_reader *r, const kent_rows *t, int line,
@@ -218,14 +229,14 @@ static void check_marks(kent_reader *r, const kent_rows *t, int line,
     bool marked = false;
     for (char *p = cell; *p; p++) {
         const size_t mark = p > cell && is_digit(p[-1]) ? thousands_mark(p) : 0;
-        marked = marked || (mark > 0 && is_digit(p[mark]));
+        marked = marked || (mark > 0 && are_thousands(p + mark));
         if (*p == ',') {
             comma = p;
             commas++;
         }
         points += *p == '.' && is_digit(p[1]);
     }
-    if (marked || commas > 1 || (commas > 0 && points > 0)) {
+    if (marked || commas > 1 || points > 1 || (commas > 0 && points > 0)) {
         complain(r, t, line,
                  "%s = \"%.60s\" has marks between thousands; write the number without "
                  "them",
@@ -234,6 +245,11 @@ static void check_marks(kent_reader *r, const kent_rows *t, int line,
         complain(r, t, line,
                  "%s = \"%.60s\" has a decimal point, and tables.decimal says comma; "
                  "write all of the table in one way",
+                 key->key, cell);
+    } else if (commas > 0 && !t->style.decimal_comma && are_thousands(comma + 1)) {
+        complain(r, t, line,
+                 "%s = \"%.60s\" has a comma, between thousands or before decimals; "
+                 "write a decimal point, and nothing between thousands",
                  key->key, cell);
     } else if (commas > 0 && !t->style.decimal_comma) {
         complain(
@@ -293,16 +309,20 @@ static void check_cell(kent_reader *r, const kent_rows *t, int line, const colum
 
 static void check_row(kent_reader *r, const kent_rows *t, const kent_csv_row *row)
 {
-    if (row->count != t->column_count) {
+    size_t count = row->count;
+    while (count > t->column_count && t->csv.cells[row->first + count - 1][0] == '\0') {
+        count--; /* spreadsheets end rows in such cells */
+    }
+    if (count != t->column_count) {
         complain(
             r, t, row->line,
             "the row has %zu cell%s and the table %zu heading%s; leave no cell out, "
             "and write a cell that holds the separator in quotes",
-            row->count, row->count == 1 ? "" : "s", t->column_count,
+            count, count == 1 ? "" : "s", t->column_count,
             t->column_count == 1 ? "" : "s");
         return;
     }
-    for (size_t i = 0; i < row->count; i++) {
+    for (size_t i = 0; i < count; i++) {
         check_cell(r, t, row->line, &t->columns[i], t->csv.cells[row->first + i]);
     }
 }
@@ -317,11 +337,15 @@ static kent_status read_headings(kent_reader *r, kent_rows *t, kent_error *err)
         return KENT_E_INPUT;
     }
     const kent_csv_row *head = &csv->rows[0];
-    t->column_count = head->count;
-    t->columns = kent_alloc(head->count, sizeof *t->columns);
-    t->members = kent_alloc(head->count, sizeof *t->members);
+    size_t count = head->count;
+    while (csv->cells[head->first + count - 1][0] == '\0') {
+        count--; /* no row is all empty */
+    }
+    t->column_count = count;
+    t->columns = kent_alloc(count, sizeof *t->columns);
+    t->members = kent_alloc(count, sizeof *t->members);
     if (!t->columns || !t->members) return kent_error_nomem(err);
-    for (size_t i = 0; i < head->count; i++) {
+    for (size_t i = 0; i < count; i++) {
         read_heading(r, t, head->line, i, csv->cells[head->first + i]);
     }
     return KENT_OK;
@@ -433,7 +457,7 @@ static bool take_route(kent_rows *t, const char *cell, kent_twig *twig)
     twig->type = KENT_TWIG_LIST;
     twig->children = t->stops;
     char *rest = t->route;
-    for (const char *id; (id = strtok_r(rest, " ", &rest)) != NULL;) {
+    for (const char *id; (id = strtok_r(rest, " \t\n", &rest)) != NULL;) {
         t->stops[twig->count++] = (kent_twig){
             .type = KENT_TWIG_TEXT, .place = twig->place, .name = "", .text = id};
     }
@@ -489,7 +513,7 @@ const kent_twig *kent_rows_group(kent_reader *r, kent_rows *rows, size_t index)
                             .name = "",
                             .number = NAN,
                             .children = rows->members};
-    for (size_t i = 0; i < row->count; i++) {
+    for (size_t i = 0; i < rows->column_count; i++) {
         const char *cell = rows->csv.cells[row->first + i];
         if (cell[0] == '\0') continue;
         if (!take_cell(r, rows, &rows->columns[i], cell,

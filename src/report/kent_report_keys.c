@@ -83,7 +83,7 @@ static void add_takes(const kent_key *k, kent_text *out)
 static void add_row(const kent_key *k, kent_text *out)
 {
     char range[80];
-    kent_key_range(k, range, sizeof range);
+    kent_key_range(k, KENT_SI, range, sizeof range);
     kent_text_add(out, "| `%s` | ", k->key);
     add_takes(k, out);
     kent_text_add(out, " | %s | %s | %s | %s |\n", range,

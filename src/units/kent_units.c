@@ -465,6 +465,14 @@ static kent_status read_plain(kent_units *u, const char *text, kent_kind kind,
         unit++;
     }
 
+    if (digits == 0 && (strncmp(own, "\xE2\x88\x92", 3) == 0 || /* minus, dash */
+                        strncmp(own, "\xE2\x80\x93", 3) == 0)) {
+        status = kent_error_set(err, KENT_E_INPUT, "",
+                                "'%.80s' starts with a dash that is no minus sign; "
+                                "write '-' in its place",
+                                own);
+        goto done;
+    }
     if (digits == 0) {
         status =
             kent_error_set(err, KENT_E_INPUT, "",

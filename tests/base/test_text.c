@@ -101,6 +101,11 @@ static void a_sequence_is_one_code_point_well_formed(void **state)
 static void distance_is_the_number_of_edits(void **state)
 {
     (void)state;
+    assert_int_equal(kent_text_misspelling("bore", "BORE"), 0);
+    assert_int_equal(kent_text_misspelling("bore", "boer"), 2);
+    assert_true(kent_text_misspelling("bore", "wall") == SIZE_MAX);
+    assert_true(kent_text_misspelling("x", "h") == SIZE_MAX); /* nothing in common */
+    assert_int_equal(kent_text_misspelling("R1", "R"), 1);
     assert_int_equal(kent_text_distance("bore", "bore"), 0);
     assert_int_equal(kent_text_distance("", "bore"), 4);
     assert_int_equal(kent_text_distance("bore", "bores"), 1);

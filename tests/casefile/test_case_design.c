@@ -154,6 +154,18 @@ static void a_bearing_that_cannot_be_known_is_refused(void **state)
         {"bearing_by_depth = ( ( \"2 m\", \"80 kPa\" ), \"1 m\" );",
          "soil \"bank\": element 2 of bearing_by_depth must be a pair, as ( \"1.4 m\", "
          "\"150 kPa\" )"},
+        {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ), ( \"2 m\", \"80 MPa\" ) );",
+         "soil \"bank\": pair 2 of bearing_by_depth: the bearing is out of range; the "
+         "range is 0 to 50000 kPa"},
+        {"passive_share = 0.5; unit_weight = \"18 kN/m^3\"; friction_angle = \"0 "
+         "deg\";",
+         "soil \"bank\": passive_share is of the earth pressure that friction_angle "
+         "and "
+         "cohesion give, and both are nil; give the soil's strength, or its bearing in "
+         "another way"},
+        {"allowable_bearing = \"90 kPa\"; passive_ratios = ( ( \"type-1\", 0.4 ), ( "
+         "\"type-1\", 0.5 ) );",
+         "soil \"bank\": passive_ratios names \"type-1\" twice; keep one"},
         {"allowable_bearing = \"90 kPa\"; passive_ratios = ( ( \"type-6\", 0.4 ) );",
          "soil \"bank\": element 1 of passive_ratios must be a pair of a trench, "
          "type-1 to "
@@ -395,7 +407,7 @@ static const struct {
     const char *what;
 } FAULTS[] = {
     {"pipe = \"A\"; from = \"0+100\"", "pipe = \"B\"; from = \"0+100\"", 17,
-     "ground zone 1: pipe: there is no pipe \"B\"; did you mean \"A\"?"},
+     "ground zone 1: pipe: there is no pipe \"B\", nor one with a name like it"},
     {"\"0+250\"", "\"0+100\"", 17,
      "ground zone 1: to must lie beyond from; stations count along the pipe's route"},
     {ZONE, "", 17,
@@ -507,6 +519,12 @@ static void what_needs_a_main_is_refused_beside_ports(void **state)
         int line;
         const char *what;
     } ROWS[] = {
+        {"type = \"bend\";", "angle = \"45 deg\";", 3,
+         "fitting \"B7\": angle is of a fitting found from geometry; ports state every "
+         "leg of this one"},
+        {"type = \"bend\";", "orientation = \"sag\";", 3,
+         "fitting \"B7\": orientation is of a fitting found from geometry; ports state "
+         "every leg of this one"},
         {"type = \"bend\";", "apart = true;", 3,
          "fitting \"B7\": apart is of a fitting found from geometry; ports state every "
          "leg of this one"},

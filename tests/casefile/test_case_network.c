@@ -317,7 +317,7 @@ static const struct {
      "state \"low\": levels = 76.5 has no unit; write for instance \"1.4 m\" or \"4.5 "
      "ft\""},
     {"( \"R\", \"76.5 m\" )", "( \"R\", \"76.5 km\" )", 17,
-     "state \"low\": levels: 76500 m is out of range; the range is -1000 to 9000 m"},
+     "state \"low\": levels: 76500.00 m is out of range; the range is -1000 to 9000 m"},
     {"( \"R\", \"76.5 m\" )", "( \"R\", \"76.5 m\" ), ( \"R\", \"70 m\" )", 17,
      "state \"low\": levels names \"R\" twice; keep one"},
     {"{ id = \"high\"; }", "{ id = \"high\"; }, { id = \"high\"; }", 16,

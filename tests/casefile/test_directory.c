@@ -30,6 +30,8 @@ static void the_nearest_id_is_offered_only_when_it_is_near(void **state)
     kent_directory d = three();
     assert_string_equal(kent_directory_nearest(&d, "EMD"), "END");
     assert_null(kent_directory_nearest(&d, "reservoir"));
+    assert_string_equal(kent_directory_nearest(&d, "end"), "END");
+    assert_null(kent_directory_nearest(&d, "Q"));
     kent_directory_clear(&d);
 }
 

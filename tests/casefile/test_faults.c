@@ -202,7 +202,7 @@ static void a_value_out_of_range_is_told_the_range(void **state)
         char range[80];
         char right[120];
         if (!has_range) continue;
-        kent_key_range(k, range, sizeof range);
+        kent_key_range(k, KENT_SI, range, sizeof range);
         (void)snprintf(right, sizeof right, "out of range; the range is %s", range);
         value_text(k, k->most + fmax(1.0, 0.01 * fabs(k->most)), value, sizeof value);
         faulty(&t, k->group, k->key, value, k->key, right);

@@ -54,6 +54,9 @@ static void a_misspelt_key_is_offered_its_nearest(void **state)
     assert_string_equal(kent_key_nearest("pipe", "roughnes"), "roughness");
     assert_string_equal(kent_key_nearest("valve", "discharge_lvl"), "discharge_level");
     assert_null(kent_key_nearest("pipe", "colour_of_the_sky"));
+    assert_string_equal(kent_key_nearest("point", "Y"), "y");
+    assert_string_equal(kent_key_nearest("point", "ID"), "id");
+    assert_null(kent_key_nearest("point", "h")); /* as far from x as from any other */
 }
 
 static void spellings_of_both_sides_of_the_ocean_are_one(void **state)
@@ -106,11 +109,14 @@ static void ranges_are_told_in_units_of_display(void **state)
 {
     (void)state;
     char range[80];
-    kent_key_range(kent_key_find("water", "temperature"), range, sizeof range);
+    kent_key_range(kent_key_find("water", "temperature"), KENT_SI, range, sizeof range);
     assert_string_equal(range, "0 to 100 degC");
-    kent_key_range(kent_key_find("pipe", "outside_diameter"), range, sizeof range);
+    kent_key_range(kent_key_find("pipe", "outside_diameter"), KENT_SI, range,
+                   sizeof range);
     assert_string_equal(range, "above 0 to 20000 mm");
-    kent_key_range(kent_key_find("pipe", "joint"), range, sizeof range);
+    kent_key_range(kent_key_find("ground", "cover"), KENT_US, range, sizeof range);
+    assert_string_equal(range, "0 to 328.084 ft"); /* 100 m / 0.3048 m */
+    kent_key_range(kent_key_find("pipe", "joint"), KENT_SI, range, sizeof range);
     assert_string_equal(range, "any");
 }
 

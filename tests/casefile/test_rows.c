@@ -106,6 +106,8 @@ static void every_way_of_writing_gives_the_same_points(void **state)
         {0, "",
          "z [cm], y [m] ,x [km],id\n5000,0,0,R1\n3000 , 0 , 0.4 , B1\n"
          "2e3,300,.7,E1\n\n,,,\n"},
+        {0, "", /* columns that a spreadsheet keeps although they are empty */
+         "id,x [m],y [m],z [m],,\nR1,0,0,50,,\nB1,400,0,30,,,,\nE1,700,300,20\n"},
         {0, "",
          "id,x,y [m],z [m]\nR1,0 m,0,50\nB1,0.4 km,0 m,30\nE1,700 m,300,2000 cm\n"},
         {';', "tables = { decimal = \"comma\"; separator = \"semicolon\"; };",
@@ -223,9 +225,14 @@ static void faults_of_headings_say_what_would_be_right(void **state)
         {NULL, "id [m],x [m],y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
          "heading 'id [m]': id takes no unit; write 'id'"},
         {NULL, "id,x (m),y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
-         "heading 'x (m)' cannot be read; a unit stands in brackets after its key, as "
-         "'z "
-         "[m]'"},
+         "heading 'x (m)' cannot be read; a unit stands in square brackets after its "
+         "key, as 'z [m]'"},
+        {NULL, "id,x [m],Y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
+         "heading 'Y' is not a key of a point; did you mean 'y'?"},
+        {NULL, "id,x [m],y [m],h [m]\n" ROWS, NULL, "points.csv", 1,
+         "heading 'h' is not a key of a point; 'kentledge check --keys'"},
+        {NULL, "id,x [m],y [m],z [m;1]\n" ROWS, NULL, "points.csv", 1,
+         "heading 'z [m;1]': 'm;1' in '1 m;1' is not a unit; write for instance"},
         {NULL, "id,x [m,y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
          "heading 'x [m' cannot be read"},
         {NULL, "id,x [m],,z [m]\n" ROWS, NULL, "points.csv", 1,
@@ -272,6 +279,21 @@ static void faults_of_cells_say_what_would_be_right(void **state)
         {NULL, HEAD "R1,0,0,50,6\n", NULL, "points.csv", 2,
          "the row has 5 cells and the table 4 headings; leave no cell out, and write a "
          "cell that holds the separator in quotes"},
+        {NULL, "id,x [m],y [m],z [m],,\nR1,0,0,50,,6\n", NULL, "points.csv", 2,
+         "the row has 6 cells and the table 4 headings"},
+        {NULL, HEAD "R1,\"1,234\",0,50\n", NULL, "points.csv", 2,
+         "x = \"1,234\" has a comma, between thousands or before decimals; write a "
+         "decimal point, and nothing between thousands"},
+        {NULL, HEAD "R1,1.234.500,0,50\n", NULL, "points.csv", 2,
+         "x = \"1.234.500\" has marks between thousands"},
+        {NULL, HEAD "R1,1_234,0,50\n", NULL, "points.csv", 2,
+         "marks between thousands"},
+        {NULL,
+         HEAD "R1,1\xE2\x80\x87"
+              "234,0,50\n",
+         NULL, "points.csv", 2, "marks between thousands"},
+        {NULL, HEAD "R1,1 1/2 m,0,50\n", NULL, "points.csv", 2,
+         "'1/2 m' in '1 1/2 m' is not a unit"},
         {NULL, HEAD "R1,\"0,5\",0,50\n", NULL, "points.csv", 2,
          "x = \"0,5\" has a comma; write a decimal point, or say in the case file: "
          "tables = { decimal = \"comma\"; separator = \"semicolon\"; }"},

@@ -213,7 +213,7 @@ static void cells_out_of_range_are_told_the_range(void **state)
         char cell[60];
         if (k->value != KENT_VALUE_QUANTITY && k->value != KENT_VALUE_NUMBER) continue;
         const bool unit = k->value == KENT_VALUE_QUANTITY;
-        kent_key_range(k, range, sizeof range);
+        kent_key_range(k, KENT_SI, range, sizeof range);
         (void)snprintf(right, sizeof right, "out of range; the range is %s", range);
         (void)snprintf(heading, sizeof heading, "%s%s%s%s", k->key, unit ? " [" : "",
                        unit ? kent_kind_si(k->kind) : "", unit ? "]" : "");

@@ -269,9 +269,11 @@ static void wrong_looking_texts_are_refused(void **state)
     assert_refused("1,4 m", KENT_LENGTH, "has a comma");
     assert_refused("1,400 m", KENT_LENGTH, "has a comma");
     assert_refused("1,5", KENT_RATIO, "has a comma");
+    assert_refused("\u22124 m", KENT_LENGTH, "no minus sign");
+    assert_refused("\u20134 m", KENT_LENGTH, "no minus sign");
     const char *const no_number[] = {
-        "",      " ",     "m",   "nan m", "NAN",    "inf m",           "INF",  "- 5 m",
-        "--5 m", "+-5 m", ". m", "e5 m",  "five m", "\342\210\2225 m", "=5 m", "/2 m"};
+        "",      " ",     "m",   "nan m", "NAN",    "inf m", "INF",  "- 5 m",
+        "--5 m", "+-5 m", ". m", "e5 m",  "five m", "~5 m",  "=5 m", "/2 m"};
     for (size_t i = 0; i < COUNT(no_number); i++) {
         assert_refused(no_number[i], KENT_LENGTH, "does not start with a number");
     }
