@@ -119,6 +119,53 @@ static void too_slow(const watch *w)
     tell_speed(w, &f, most, "almost at rest");
 }
 
+/* Share of its flow below which an outflow that goes by pressure hardly runs. Common
+ * practice, no source. One that does not go by pressure should have all. */
+static const double HARDLY_RUNS = 0.1, NEARLY_ALL = 0.999;
+
+/* -: the least share of what is asked that an outflow gets in any state; in *asked,
+ * m3/s, what that state asks. */
+static double share_of(const watch *w, size_t outflow, double *asked)
+{
+    double least = 1.0;
+    *asked = 0.0;
+    for (size_t i = 0; i < w->count; i++) {
+        const kent_steady *s = w->steadies[i];
+        if (!s) continue;
+        const kent_model *m = s->view ? s->view : w->m;
+        const double flow = m->outflows[outflow].flow;
+        if (!(flow > 0.0) || s->outflow[outflow] / flow >= least) continue;
+        least = s->outflow[outflow] / flow;
+        *asked = flow;
+    }
+    return least;
+}
+
+/* The steady flow then looks ordinary, and is not what the case asks. */
+static void less_than_asked(const watch *w)
+{
+    const kent_model *m = w->m;
+    found f = {0};
+    double asked = 0.0, worst = 0.0;
+    for (size_t i = 0; i < m->outflow_count; i++) {
+        const bool by_pressure = m->outflows[i].pressure_dependent;
+        const double share = share_of(w, i, &asked);
+        if (!(share < (by_pressure ? HARDLY_RUNS : NEARLY_ALL))) continue;
+        if (f.count == 0 || 1.0 - share > f.worst_off) worst = asked;
+        find(&f, m->points[m->outflows[i].point].id, i, 1.0 - share);
+    }
+    if (f.count == 0) return;
+    kent_text words = {0};
+    kent_text_add(&words,
+                  "the main brings %s of the %s asked at %s, and the pressure there is "
+                  "used up: a flow in a wrong unit, or a main too small?",
+                  kent_said_of(KENT_FLOW, m->units, (1.0 - f.worst_off) * worst).s,
+                  kent_said_of(KENT_FLOW, m->units, worst).s,
+                  m->points[m->outflows[f.worst].point].id);
+    tell(w, &f, "outflow", kent_text_of(&words));
+    kent_text_clear(&words);
+}
+
 /* ---- pipes ----------------------------------------------------------------------- */
 
 /* Share of the computed wave speed outside of which a given one suits another wall.
@@ -387,6 +434,7 @@ static const struct {
 } ALARMS[] = {
     {too_fast, true},
     {too_slow, true},
+    {less_than_asked, true},
     {wave_of_another_wall, true},
     {wave_of_another_material, true},
     {roughness_in_a_wrong_unit, true},

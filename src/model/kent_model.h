@@ -642,6 +642,9 @@ typedef struct kent_ground_here {
  * and water is theirs alone. */
 kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chainage);
 
+/* m: ground to crown of a pipe of that outside diameter; NAN: the point has none. */
+double kent_point_cover(const kent_point *point, double outside_diameter);
+
 /* m: station at a chainage of a pipe, counted from the last point before it. */
 double kent_model_station_at(const kent_model *m, int pipe, double chainage);
 

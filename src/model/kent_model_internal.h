@@ -88,8 +88,6 @@ void kent_route_complain_falling(const kent_model *m, const kent_pipe *pipe,
  * against those of the pipes. Needs stations. */
 kent_status kent_ground_settle(kent_model *m, const kent_layout *l,
                                kent_complaints *complaints);
-/* m: ground to crown of a pipe of that outside diameter; NAN: the point has none. */
-double kent_point_cover(const kent_point *point, double outside_diameter);
 /* The zone of a pipe at a station; -1. */
 int kent_zone_at(const kent_model *m, int pipe, double station);
 

@@ -189,7 +189,8 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
 
 /* ---- restrained length ----------------------------------------------------------- */
 
-/* Says what a leg passes through without being held, and what trench is guessed at. */
+/* Says what a leg passes through without being held, what trench is guessed at, and
+ * whose weak ground it goes by. */
 static void leg_note(kent_holding_work *w, const kent_leg_work *work)
 {
     const kent_system units = w->m->units;
@@ -209,6 +210,13 @@ static void leg_note(kent_holding_work *w, const kent_leg_work *work)
                            "%s: its passive_ratio, %g, is taken",
                            at->soil->id, kent_trench_word(at->trench_kind),
                            at->trench.passive_ratio);
+        }
+        if (at->counts && at->weakest >= 0) {
+            kent_notes_add(&w->met,
+                           "the ground at %s is the weakest along the restrained "
+                           "length, which is worked out with it; ground_zones would "
+                           "bound it",
+                           w->m->points[at->weakest].id);
         }
     }
 }

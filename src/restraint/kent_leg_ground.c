@@ -9,6 +9,9 @@ static const double PI = 3.14159265358979323846;
 /* m: places nearer than this along a pipe are one place. */
 static const double SAME_PLACE = 1e-6;
 
+/* Relative: a length that falling cover makes longer than this no more is found. */
+static const double NEAR_ENOUGH = 1e-12;
+
 double kent_port_chainage(const kent_model *m, const kent_port *port)
 {
     const kent_span *span = &m->spans[port->span];
@@ -138,49 +141,149 @@ static void piece_grip(const kent_model *m, const kent_ground_here *ground,
     out->friction =
         w->sleeve * (w->bend ? out->grip.friction : out->grip.friction_whole);
     out->bearing = w->bears ? out->grip.bearing : 0.0;
-    out->resistance = out->friction + 0.5 * out->bearing;
+    /* a pipe that floats has no friction, and certainly none the other way */
+    out->resistance = fmax(0.0, out->friction + 0.5 * out->bearing);
 }
 
-/* One more piece in this ground, without its length. Returns what is missing. */
-static unsigned piece_add(const kent_model *m, const kent_ground_here *ground,
-                          kent_leg_work *w)
+/* A piece in this ground, without its length. Returns what is missing. */
+static unsigned piece_fill(const kent_model *m, const kent_ground_here *ground,
+                           kent_leg_work *w, kent_leg_piece *out)
 {
     unsigned lack = 0;
 
-    if (w->piece_count == KENT_LEG_PIECES) return KENT_LACK_PIECES;
     if (ground->soil < 0) return KENT_LACK_SOIL;
-    kent_leg_piece *piece = &w->piece[w->piece_count];
-    *piece = (kent_leg_piece){
+    *out = (kent_leg_piece){
         .soil = &m->soils[ground->soil],
         .trench_kind = ground->trench,
+        .weakest = -1,
         .trench.cover = ground->cover,
     };
-    piece->counts = kent_soil_counts(piece->soil);
-    if (piece->counts) {
-        lack = soil_lacks(piece->soil, ground->trench, w->bears);
-        if (lack != 0) w->lacking = piece->soil;
-        if (isnan(ground->cover)) lack |= KENT_LACK_COVER;
-        if (isnan(w->pipe_weight)) lack |= KENT_LACK_PIPE_MASS;
-        if (lack != 0) return lack;
-        piece_grip(m, ground, w, piece);
+    out->counts = kent_soil_counts(out->soil);
+    if (!out->counts) return 0;
+    lack = soil_lacks(out->soil, ground->trench, w->bears);
+    if (lack != 0) w->lacking = out->soil;
+    if (isnan(ground->cover)) lack |= KENT_LACK_COVER;
+    if (isnan(w->pipe_weight)) lack |= KENT_LACK_PIPE_MASS;
+    if (lack == 0) piece_grip(m, ground, w, out);
+    return lack;
+}
+
+/* Ground that holds less takes the piece's place. Returns what is missing. */
+static unsigned piece_weaken(const kent_model *m, const kent_ground_here *ground,
+                             int point, kent_leg_work *w, kent_leg_piece *piece)
+{
+    kent_leg_piece other = {0};
+    const unsigned lack = piece_fill(m, ground, w, &other);
+
+    if (lack != 0) return lack;
+    if (other.resistance < piece->resistance) {
+        *piece = other;
+        piece->weakest = point;
     }
-    w->piece_count++;
     return 0;
 }
 
-/* The ground of a zone from one chainage of a pipe to the next edge (INFINITY: none),
- * under the lesser of the covers at its ends. */
-static kent_ground_here ground_between(const kent_model *m, int pipe, double from,
-                                       double to)
-{
-    const double step = to > from ? SAME_PLACE : -SAME_PLACE;
-    kent_ground_here ground = kent_model_ground_at(m, pipe, from + step);
+/* ---- one part -------------------------------------------------------------------- */
 
-    if (isfinite(to)) {
-        const double there = kent_model_ground_at(m, pipe, to - step).cover;
-        if (!(ground.cover <= there)) ground.cover = there; /* NaN: not known */
+/* A part of a leg in one kind of ground: to the next edge of a zone, or to the end. */
+typedef struct leg_part {
+    int pipe;
+    bool ahead;
+    double from, reach;      /* m: chainage of the pipe; to the edge, INFINITY: none */
+    kent_ground_here ground; /* where nothing else is said */
+} leg_part;
+
+static double part_place(const leg_part *part, double away)
+{
+    return part->ahead ? part->from + away : part->from - away;
+}
+
+/* The ground at a distance (m) into the part, where nothing of its own is said. What
+ * nobody states there is as where the part begins. */
+static kent_ground_here part_ground(const kent_model *m, const leg_part *part,
+                                    double away)
+{
+    kent_ground_here here = kent_model_ground_at(m, part->pipe, part_place(part, away));
+    if (here.soil < 0) here.soil = part->ground.soil;
+    if (here.trench < 0) here.trench = part->ground.trench;
+    if (isnan(here.cover)) here.cover = part->ground.cover;
+    if (isnan(here.water_table)) here.water_table = part->ground.water_table;
+    return here;
+}
+
+/* The first stop of a pipe at or beyond a chainage. */
+static size_t stop_search(const kent_model *m, const kent_pipe *pipe, double chainage)
+{
+    size_t lo = pipe->route_first, hi = pipe->route_first + pipe->route_count;
+    const double start = m->chainage[pipe->route_first];
+
+    while (lo < hi) {
+        const size_t mid = lo + (hi - lo) / 2;
+        if (m->chainage[mid] - start < chainage) {
+            lo = mid + 1;
+        } else {
+            hi = mid;
+        }
     }
-    return ground;
+    return lo;
+}
+
+/* What a stop says of its own. Ground that can't be relied on is no part's: it breaks
+ * the leg (kent_leg_fits). */
+static void ground_of_stop(const kent_model *m, int point, double outside,
+                           kent_ground_here *ground)
+{
+    const kent_point *p = &m->points[point];
+    const double cover = kent_point_cover(p, outside);
+
+    if (p->soil >= 0 && kent_soil_counts(&m->soils[p->soil])) ground->soil = p->soil;
+    if (!isnan(cover)) ground->cover = cover;
+    if (!isnan(p->water_table)) ground->water_table = p->water_table;
+}
+
+/* Between two distances (m) into a part, its piece becomes as weak as its weakest stop,
+ * and as the cover at the second. Returns what is missing. */
+static unsigned part_weaken(const kent_model *m, const leg_part *part, double begin,
+                            double end, kent_leg_work *w, kent_leg_piece *piece)
+{
+    const kent_pipe *pipe = &m->pipes[part->pipe];
+    const double start = m->chainage[pipe->route_first];
+    const double a = part_place(part, begin), b = part_place(part, end);
+    const size_t stops = pipe->route_first + pipe->route_count;
+    kent_ground_here ground = part_ground(m, part, end - SAME_PLACE);
+    unsigned lack = piece_weaken(m, &ground, -1, w, piece);
+
+    for (size_t k = stop_search(m, pipe, fmin(a, b)); k < stops && lack == 0; k++) {
+        const double there = m->chainage[k] - start;
+        const double away = fabs(there - part->from);
+        if (there > fmax(a, b)) break;
+        if (away <= SAME_PLACE || away >= part->reach - SAME_PLACE) continue;
+        ground = part_ground(m, part, away);
+        ground_of_stop(m, m->route[k], pipe->outside_diameter, &ground);
+        lack = piece_weaken(m, &ground, m->route[k], w, piece);
+    }
+    return lack;
+}
+
+/* m: how much of a part is needed for what is left (N) of the demand, its piece being
+ * no stronger than the weakest ground of that length. Returns what is missing. */
+static unsigned part_need(const kent_model *m, const leg_part *part, double left,
+                          kent_leg_work *w, kent_leg_piece *piece, double *needed)
+{
+    const double length = pipe_length(m, part->pipe);
+    const double whole = part->ahead ? length - part->from : part->from;
+    const double most = fmin(part->reach, whole);
+    double looked = 0.0;
+
+    *needed = left / piece->resistance; /* not finite: nothing holds */
+    while (looked<most && * needed> looked * (1.0 + NEAR_ENOUGH)) {
+        const double to = fmin(*needed, most);
+        const unsigned lack = part_weaken(m, part, looked, to, w, piece);
+        if (lack != 0) return lack;
+        *needed = left / piece->resistance;
+        looked = to;
+    }
+    return 0;
 }
 
 /* Whether a leg leaves the fitting in other ground than the fitting's: at an edge, or
@@ -194,47 +297,61 @@ static bool leaves_other(const kent_model *m, const kent_fitting *fitting, int p
     return fitting->zone >= 0 && m->ground_zones[fitting->zone].pipe == pipe;
 }
 
+/* The part that begins at a chainage. */
+static leg_part part_from(const kent_model *m, int pipe, bool ahead, double from)
+{
+    const double step = ahead ? SAME_PLACE : -SAME_PLACE;
+    const double edge = kent_zone_edge(m, pipe, from, ahead);
+
+    return (leg_part){
+        .pipe = pipe,
+        .ahead = ahead,
+        .from = from,
+        .reach = fabs(edge - from),
+        .ground = kent_model_ground_at(m, pipe, from + step),
+    };
+}
+
 unsigned kent_leg_pieces(const kent_model *m, const kent_fitting *fitting,
                          const kent_port *port, kent_leg_work *w)
 {
-    const int pipe = m->spans[port->span].pipe;
-    const bool ahead = port->sign > 0.0;
-    double from = kent_port_chainage(m, port), left = w->demand, length = 0.0;
-    double edge = kent_zone_edge(m, pipe, from, ahead);
-    kent_ground_here ground = ground_between(m, pipe, from, edge);
+    double left = w->demand, length = 0.0;
+    leg_part part = part_from(m, m->spans[port->span].pipe, port->sign > 0.0,
+                              kent_port_chainage(m, port));
 
     w->pipe_weight = pipe_weight(w->pipe, m->gravity);
     w->sleeve = m->ground.wrapped ? m->rules.wrapped_ratio : 1.0;
     if (fitting->soil < 0 || !kent_soil_counts(&m->soils[fitting->soil])) {
         return KENT_LACK_SOIL;
     }
-    w->own = fabs(edge - from);
-    if (leaves_other(m, fitting, pipe, &ground)) {
+    w->own = part.reach;
+    if (leaves_other(m, fitting, part.pipe, &part.ground)) {
         w->own = 0.0;
     } else {
-        ground.soil = fitting->soil;
-        ground.trench = fitting->trench;
-        ground.cover = fitting->cover;
-        ground.water_table = fitting->water_table;
+        part.ground.soil = fitting->soil;
+        part.ground.trench = fitting->trench;
+        part.ground.cover = fitting->cover;
+        part.ground.water_table = fitting->water_table;
     }
     for (;;) {
-        const unsigned lack = piece_add(m, &ground, w);
+        double needed = NAN;
+        if (w->piece_count == KENT_LEG_PIECES) return KENT_LACK_PIECES;
+        kent_leg_piece *piece = &w->piece[w->piece_count];
+        unsigned lack = piece_fill(m, &part.ground, w, piece);
+        if (lack == 0) lack = part_need(m, &part, left, w, piece, &needed);
         if (lack != 0) return lack;
-        kent_leg_piece *piece = &w->piece[w->piece_count - 1];
-        const double reach = fabs(edge - from);
-        const double needed = left / piece->resistance; /* not finite: nothing holds */
-        if (isinf(edge) || needed <= reach) {
+        w->piece_count++;
+        if (isinf(part.reach) || needed <= part.reach) {
             piece->length = needed;
             w->length = length + needed;
             if (isfinite(needed)) return 0;
             return piece->counts ? KENT_LACK_GRIP : KENT_LACK_SOUND;
         }
-        piece->length = reach;
-        length += reach;
-        left -= piece->resistance * reach;
-        from = edge;
-        edge = kent_zone_edge(m, pipe, from, ahead);
-        ground = ground_between(m, pipe, from, edge);
+        piece->counts = piece->resistance > 0.0;
+        piece->length = part.reach;
+        length += part.reach;
+        left -= piece->resistance * part.reach;
+        part = part_from(m, part.pipe, part.ahead, part_place(&part, part.reach));
     }
 }
 

@@ -44,6 +44,7 @@ typedef struct kent_leg_piece {
     const kent_soil *soil;
     int trench_kind; /* -1: not stated */
     bool counts;     /* false: ground that can't be relied on, passed through */
+    int weakest;     /* point whose ground this is, the least along; -1: none of them */
     kent_trench trench;
     kent_soil_grip grip;
     double displaced;         /* N/m, 0 above the water table */
@@ -108,7 +109,8 @@ typedef struct kent_sound {
 kent_sound kent_leg_sound(const kent_model *m, const kent_port *port);
 
 /* Fills the pieces of a leg from its demand, first in the ground of the fitting, then
- * in that of the zones its pipe passes. Returns 0, or what is missing. */
+ * in that of the zones its pipe passes, each as weak as the weakest ground along it.
+ * Returns 0, or what is missing. */
 unsigned kent_leg_pieces(const kent_model *m, const kent_fitting *fitting,
                          const kent_port *port, kent_leg_work *w);
 

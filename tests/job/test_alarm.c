@@ -89,6 +89,36 @@ static void a_stream_is_fast_above_five_metres_a_second(void **state)
     kent_build_clear(&b);
 }
 
+/* Cubic metres written for litres: what arrives looks ordinary, and no speed tells. An
+ * outflow by pressure draws less on purpose, but not next to nothing. */
+static void an_outflow_that_gets_less_than_it_asks_is_told(void **state)
+{
+    (void)state;
+    for (int kind = 0; kind < 4; kind++) {
+        static const double asked[] = {0.05, 60.0, 60.0, 60.0}; /* m3/s */
+        kent_build b = quiet_main();
+        kent_build_outflow(&b, "E", asked[kind]);
+        b.model->pipes[0].friction_coefficient =
+            0.02; /* fixed factor, for a slow one */
+        b.model->pipes[0].friction = KENT_DARCY_FIXED;
+        if (kind >= 2) {
+            b.model->outflows[0].pressure_dependent = true;
+            b.model->outflows[0].full_pressure = kind == 2 ? 100e9 : 100e6;
+            b.model->outflows[0].flow = kind == 2 ? 60.0 : 0.2;
+        }
+        b.model->fixed_levels[0].level = kind == 3 ? 1000.0 : 20.0;
+        kent_build_derive(&b);
+        kent_notes notes = raised_in(&b, KENT_ALARM_CHECK);
+        bool told = false;
+        for (size_t i = 0; i < notes.count; i++) {
+            told = told || strstr(notes.text[i], "of the 60000");
+        }
+        assert_true(told == (kind == 1 || kind == 2));
+        kent_notes_clear(&notes);
+        kent_build_clear(&b);
+    }
+}
+
 /* A published surge calculation took 225.99 Ml in 23 h as 0.00273 m3/s, where it is
  * 2.73: in a main of 1.5 m that is 1.5 mm/s in place of 1.5 m/s. */
 static void a_slip_of_a_thousand_is_named_where_it_would_explain_the_speed(void **state)
@@ -363,6 +393,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_stream_is_slow_below_five_centimetres_a_second),
+        cmocka_unit_test(an_outflow_that_gets_less_than_it_asks_is_told),
         cmocka_unit_test(a_stream_is_fast_above_five_metres_a_second),
         cmocka_unit_test(
             a_slip_of_a_thousand_is_named_where_it_would_explain_the_speed),

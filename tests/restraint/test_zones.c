@@ -175,9 +175,10 @@ static void cover_and_water_of_a_zone_count_in_it(void **state)
     finish(&b, r);
 }
 
-/* The ground falls from 1.5 m of cover at C to 0.7 m at E, 200 m on: 1.496 m at the end
- * of the clay, 1.1 m at that of the till beyond it. */
-static void a_part_goes_by_the_lesser_cover_of_its_ends(void **state)
+/* The ground falls from 1.5 m of cover at C to 0.7 m at E, 200 m on, 0.004 m in each
+ * metre: 1.4984 m at the edge of the clay, 1.496 m at the end of the clay, and so on to
+ * the end of the leg, which is found by trial. */
+static void a_part_goes_by_the_least_cover_along_it(void **state)
 {
     (void)state;
     kent_build b = main_of_zones();
@@ -186,11 +187,92 @@ static void a_part_goes_by_the_lesser_cover_of_its_ends(void **state)
     (void)zoned(&b, 200.4, 201.0, CLAY);
     (void)zoned(&b, 201.0, 300.0, TILL);
     kent_restraints *r = sized(&b);
-    const double first = holds(&b, TILL, 1.5, 0.6),
+    const double first = holds(&b, TILL, 1.4984, 0.6),
                  second = holds(&b, CLAY, 1.496, 0.6);
-    const double third = holds(&b, TILL, 1.1, 0.6);
-    assert_close(at_c(&b, r)->legs[1].length,
-                 1.0 + (demand() - 0.4 * first - 0.6 * second) / third, 1e-7);
+    double length = 1.0;
+    for (int i = 0; i < 50; i++) {
+        const double third = holds(&b, TILL, 1.5 - 0.004 * length, 0.6);
+        length = 1.0 + (demand() - 0.4 * first - 0.6 * second) / third;
+    }
+    assert_true(length > 1.1);
+    assert_close(at_c(&b, r)->legs[1].length, length, 1e-7);
+    finish(&b, r);
+}
+
+/* A stop D stands 1 m beyond C, where nothing turns; the leg is 1.6 m long in till. */
+static kent_build main_with_a_stop(double beyond)
+{
+    kent_build b = kent_build_new();
+    const double cosine = cos(22.5 * DEGREE), sine = sin(22.5 * DEGREE);
+    (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "C", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "D", beyond * cosine, beyond * sine, 50.0);
+    (void)kent_build_point(&b, "E", 200.0 * cosine, 200.0 * sine, 50.0);
+    const int p = kent_build_pipe(&b, "P", "A C D E", 0.6, 1000.0);
+    b.model->pipes[p].material_density = 7050.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_outflow(&b, "E", 0.0);
+    (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    (void)kent_build_soil(&b, "clay", 90e3, 17e3, 1.5);
+    full_soil(&b.model->soils[TILL], 30.0, 0.0);
+    full_soil(&b.model->soils[CLAY], 12.0, 2e3);
+    b.model->ground.soil = TILL;
+    b.model->ground.water_table = (double)INFINITY;
+    b.model->loads.test_pressure = 1.0e6;
+    const int note = kent_build_note(&b, "C");
+    b.model->notes[note].restraint = KENT_RESTRAINED_JOINTS;
+    return b;
+}
+
+/* Cover, soil and water of a stop within the leg count all along it, those of one
+ * beyond its end do not, and better ground there is no gain. */
+static void a_leg_is_as_weak_as_the_weakest_stop_within_it(void **state)
+{
+    (void)state;
+    enum { COVER, SOIL, WATER, BETTER, KINDS };
+    for (int kind = 0; kind < KINDS; kind++) {
+        for (int far = 0; far < 2; far++) {
+            kent_build b = main_with_a_stop(far ? 50.0 : 1.0);
+            kent_point *d = &b.model->points[2];
+            const double till = holds(&b, TILL, 1.5, 0.6);
+            double there = till;
+            if (kind == COVER) d->cover = 0.8;
+            if (kind == COVER) there = holds(&b, TILL, 0.8, 0.6);
+            if (kind == SOIL) d->soil = CLAY;
+            if (kind == SOIL) there = holds(&b, CLAY, 1.5, 0.6);
+            if (kind == WATER) d->water_table = 0.0;
+            if (kind == BETTER) d->cover = 4.0;
+            kent_restraints *r = sized(&b);
+            const kent_holding *h = at_c(&b, r);
+            const bool weak = kind != BETTER && !far;
+            assert_true(there <= till && demand() / till > 1.2);
+            assert_close(h->legs[0].length, demand() / till, 1e-9);
+            if (weak && kind == WATER) {
+                assert_true(h->legs[1].length > 1.3 * h->legs[0].length);
+            } else {
+                assert_close(h->legs[1].length, demand() / (weak ? there : till), 1e-9);
+            }
+            assert_true(kent_hand_says(h, "the ground at D is the weakest along") ==
+                        weak);
+            finish(&b, r);
+        }
+    }
+}
+
+/* In soil lighter than ground water a pipe of plastic floats: W of 11.4 is below nil, and
+ * gives no length at all, least of all a negative one that holds. */
+static void a_pipe_that_floats_has_no_length(void **state)
+{
+    (void)state;
+    kent_build b = main_of_zones();
+    b.model->pipes[0].material_density = 900.0;
+    b.model->soils[TILL].unit_weight = 9000.0; /* less than water */
+    b.model->ground.water_table = 0.0;
+    kent_restraints *r = sized(&b);
+    const kent_holding *h = at_c(&b, r);
+    assert_int_equal(h->leg_count, 0);
+    assert_false(h->held);
+    kent_hand_expect(h, "makes no friction on the pipe");
     finish(&b, r);
 }
 
@@ -247,8 +329,9 @@ static void ground_that_changes_too_often_is_refused(void **state)
     }
 }
 
-/* A tee's branch has no zones of its own: it goes on in the ground of the tee. */
-static void a_branch_without_zones_goes_on_in_the_ground_of_the_tee(void **state)
+/* A tee's branch has no zones of its own: it goes on in the ground of the tee, or in
+ * that of the site where this holds less, as till holds this small pipe. */
+static void a_branch_without_zones_goes_by_the_weaker_of_two_grounds(void **state)
 {
     (void)state;
     kent_build b = main_of_zones();
@@ -266,9 +349,17 @@ static void a_branch_without_zones_goes_on_in_the_ground_of_the_tee(void **state
     (void)kent_build_point(&b, "S", 0.0, -100.0, 50.0);
     (void)kent_build_pipe(&b, "Q", "C S", 0.2, 1000.0);
     b.model->pipes[1].material_density = 7050.0;
-    b.model->ground.soil = CLAY;
     r = sized(&b);
     assert_close(at_c(&b, r)->legs[0].length, in_zone, 1e-9);
+    finish(&b, r);
+
+    b = main_of_zones();
+    (void)kent_build_point(&b, "S", 0.0, -100.0, 50.0);
+    (void)kent_build_pipe(&b, "Q", "C S", 0.2, 1000.0);
+    b.model->pipes[1].material_density = 7050.0;
+    b.model->ground.soil = CLAY;
+    r = sized(&b);
+    assert_true(at_c(&b, r)->legs[0].length < in_zone - 0.1);
     finish(&b, r);
 }
 
@@ -344,12 +435,14 @@ int main(void)
         cmocka_unit_test(a_zone_of_the_same_ground_changes_nothing),
         cmocka_unit_test(a_leg_is_added_up_over_what_it_passes),
         cmocka_unit_test(cover_and_water_of_a_zone_count_in_it),
-        cmocka_unit_test(a_part_goes_by_the_lesser_cover_of_its_ends),
+        cmocka_unit_test(a_part_goes_by_the_least_cover_along_it),
+        cmocka_unit_test(a_leg_is_as_weak_as_the_weakest_stop_within_it),
+        cmocka_unit_test(a_pipe_that_floats_has_no_length),
         cmocka_unit_test(peat_on_the_way_is_passed_through_and_said),
         cmocka_unit_test(peat_to_the_end_of_the_pipe_gives_no_length),
         cmocka_unit_test(what_a_soil_on_the_way_lacks_is_named),
         cmocka_unit_test(ground_that_changes_too_often_is_refused),
-        cmocka_unit_test(a_branch_without_zones_goes_on_in_the_ground_of_the_tee),
+        cmocka_unit_test(a_branch_without_zones_goes_by_the_weaker_of_two_grounds),
         cmocka_unit_test(the_share_of_passive_pressure_goes_by_the_trench),
         cmocka_unit_test(in_a_zone_of_peat_it_says_how_far_its_edges_are),
         cmocka_unit_test(every_line_over_parts_follows_from_those_above),
