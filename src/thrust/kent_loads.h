@@ -36,10 +36,10 @@ typedef struct kent_load_case {
     int scenario;        /* -1: none; of a closed valve: whose peak presses on it */
     int state;           /* the steady one or the march's; -1: of none in particular */
     bool given;          /* the one case of a ports-only fitting */
-    bool closed;         /* of a shut valve, pressed from one side only: */
-    size_t pressed;      /* which port */
     bool extended;       /* a branch without a pipe, once one is joined to it */
     bool later;          /* under the pressure expected later */
+    bool closed;         /* of a shut valve, pressed from one side only: */
+    size_t pressed;      /* which port */
     const kent_site_test *test; /* of the result: how the test pressure was found; NULL:
                                    as stated */
     double safety_factor;

@@ -329,6 +329,7 @@ static void what_a_fitting_serves_stands_in_json_and_csv(void **state)
     kent_text_clear(&csv);
 }
 
+/* NOLINTNEXTLINE(misc-no-recursion): as deep as a path has dots */
 static void walk(const json_t *value, const char *path, const char *whole)
 {
     if (*path == '\0') return;
