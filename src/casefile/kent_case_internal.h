@@ -38,6 +38,9 @@ void kent_fill_head(kent_filling *f, const char *path);
 void kent_fill_water(kent_filling *f);
 void kent_fill_site(kent_filling *f);
 void kent_fill_rules(kent_filling *f);
+
+/* After soils and loads: a factor meant for one table's bearings, used with others. */
+void kent_fill_rules_check(kent_filling *f);
 void kent_fill_ground(kent_filling *f);
 void kent_fill_loads(kent_filling *f);
 void kent_fill_solver(kent_filling *f);

@@ -126,6 +126,7 @@ void kent_fill_rules(kent_filling *f)
     *rules = f->catalogue->rules[set];
     if (!there) return;
     kent_record_rules(&r, rules);
+    if (kent_record_has(&r, "safety_factor")) rules->soils[0] = '\0';
     for (size_t i = 0; i < r.count; i++) {
         const char *key = r.keys[i].key;
         if (!r.fields[i].twig || strcmp(key, "set") == 0) continue;
@@ -136,5 +137,58 @@ void kent_fill_rules(kent_filling *f)
     if (r.sound && rules->width_to_height[0] > rules->width_to_height[1]) {
         kent_record_complain(&f->reader, &r, NULL,
                              "width_to_height_least is above width_to_height_most");
+    }
+}
+
+/* Whether an id ends in "-WORD". */
+static bool ends_in(const char *id, const char *word)
+{
+    const size_t length = strlen(id);
+    const size_t n = strlen(word);
+    return length > n && id[length - n - 1] == '-' &&
+           strcmp(id + length - n, word) == 0;
+}
+
+static bool is_same_bearing(const kent_soil *a, const kent_soil *b)
+{
+    bool same = a->route == b->route && a->by_depth_count == b->by_depth_count &&
+                !(fabs(a->allowable_bearing - b->allowable_bearing) > 0.0) &&
+                !(fabs(a->bearing_gradient - b->bearing_gradient) > 0.0);
+    for (size_t i = 0; same && i < a->by_depth_count; i++) {
+        same = !(fabs(a->by_depth[i].depth - b->by_depth[i].depth) > 0.0) &&
+               !(fabs(a->by_depth[i].bearing - b->by_depth[i].bearing) > 0.0);
+    }
+    return same;
+}
+
+/* A soil of the case counts where it has kept the bearing of its row. */
+static bool has_bearing_of(const kent_filling *f, const kent_soil *soil,
+                           const char *table)
+{
+    for (size_t i = 0; i < f->catalogue->soil_count; i++) {
+        const kent_soil *row = &f->catalogue->soils[i];
+        if (ends_in(row->id, table) && is_same_bearing(row, soil)) return true;
+    }
+    return false;
+}
+
+void kent_fill_rules_check(kent_filling *f)
+{
+    const kent_rules *rules = &f->model->rules;
+    const kent_loads *l = &f->model->loads;
+    bool asked = false; /* of any load case is the set's factor */
+    for (size_t i = 0; i < sizeof l->factor / sizeof l->factor[0]; i++) {
+        asked = asked || isnan(l->factor[i]);
+    }
+    if (!asked || rules->soils[0] == '\0') return;
+    for (size_t i = 0; i < f->model->soil_count; i++) {
+        const kent_soil *soil = &f->model->soils[i];
+        if (has_bearing_of(f, soil, rules->soils)) continue;
+        kent_notes_add(&f->model->cautions,
+                       "the safety factor %.2f of design rules \"%s\" is meant for the "
+                       "bearings of its own table, and that of soil \"%s\" is not one "
+                       "of them; give loads.safety_factor, name another set, or a "
+                       "soil whose id ends in %s",
+                       rules->safety_factor, rules->id, soil->id, rules->soils);
     }
 }

@@ -125,6 +125,7 @@ void kent_catalogue_add_rules(kent_reader *r, kent_record *record, kent_catalogu
     if (!rules) return;
     *rules = (kent_rules){.factor_test = NAN};
     kent_record_copy(record, "id", NULL, rules->id, sizeof rules->id);
+    kent_record_copy(record, "soils", NULL, rules->soils, sizeof rules->soils);
     kent_record_rules(record, rules);
     source_with_status(record, rules->source, sizeof rules->source);
 }

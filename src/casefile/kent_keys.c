@@ -632,6 +632,8 @@ const kent_key KENT_KEYS[] = {
 
     ID("rule", "id", "required", "name of the set"),
     RULE_VALUES("rule", "required"),
+    TEXT("rule", "soils", 15, "any",
+         "last word of the ids of the soils that safety_factor is meant for"),
     PROVENANCE("rule"),
 };
 

@@ -281,6 +281,8 @@ typedef struct kent_rules {
     char id[KENT_ID];
     char source[200];
     double safety_factor;
+    char soils[16];              /* last word of the ids of soils that safety_factor
+                                    is meant for; "": any */
     double factor_test;          /* in place of safety_factor under test; NAN */
     double height_to_depth;      /* block height over depth of its base, at most */
     double width_to_height[2];   /* least, most */

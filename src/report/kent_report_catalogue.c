@@ -5,6 +5,8 @@
 #include <math.h>
 #include <string.h>
 
+static bool is_digit(char c) { return c >= '0' && c <= '9'; }
+
 /* What the parts of one listing share. */
 typedef struct kent_listing {
     const kent_catalogue *catalogue;
@@ -16,6 +18,23 @@ typedef struct kent_listing {
     kent_text *out;
 } kent_listing;
 
+/* Whether a text holds a word, its numbers whole: "DN100" is not in "DN1000", nor
+ * "8in" in "48in", nor "DR32" in "DR32.5". */
+static bool has_word(const char *text, const char *word)
+{
+    const size_t length = strlen(word);
+    for (const char *at = text; length > 0 && (at = strcasestr(at, word)); at++) {
+        const char *end = at + length;
+        const bool cut_before =
+            at > text && is_digit(at[0]) && (is_digit(at[-1]) || at[-1] == '.');
+        const bool cut_after =
+            is_digit(end[-1]) &&
+            (is_digit(end[0]) || (end[0] == '.' && is_digit(end[1])));
+        if (!cut_before && !cut_after) return true;
+    }
+    return length == 0;
+}
+
 /* Whether a row is asked for by its words; counts it then. */
 static bool wanted(const kent_listing *l, const char *id, const char *material,
                    const char *standard, const char *source, const char *status)
@@ -24,7 +43,7 @@ static bool wanted(const kent_listing *l, const char *id, const char *material,
     for (size_t i = 0; i < l->choice->word_count; i++) {
         bool found = false;
         for (size_t k = 0; k < sizeof texts / sizeof texts[0]; k++) {
-            found = found || strcasestr(texts[k], l->choice->words[i]) != NULL;
+            found = found || has_word(texts[k], l->choice->words[i]);
         }
         if (!found) return false;
     }
@@ -280,6 +299,9 @@ static void list_rules(const kent_listing *l)
             kent_text_add(l->out, "%sDesign rules\n", l->out->length > 0 ? "\n" : "");
         }
         kent_text_add(&words, "%s: safety factor %.2f", r->id, r->safety_factor);
+        if (r->soils[0] != '\0') {
+            kent_text_add(&words, " on bearings of the soils %s alone", r->soils);
+        }
         if (!isnan(r->factor_test)) {
             kent_text_add(&words, ", under test %.2f", r->factor_test);
         }

@@ -232,6 +232,7 @@ static void walls_of_pressure_classes_follow_the_formula_of_awwa_c150(void **sta
                 (psi + 100.0) * IRON[i].outside / 42000.0 + 0.08 + IRON[i].tolerance;
             assert_close(p->outside_diameter, IRON[i].outside * IN, 1e-12);
             assert_within(p->wall / IN, fmax(wall, 0.25), 0.00501);
+            assert_within(100.0 * p->wall / IN, round(100.0 * p->wall / IN), 1e-9);
             assert_close(p->wall_minimum, p->wall - IRON[i].tolerance * IN, 1e-12);
             assert_close(p->lining, IRON[i].lining * IN, 1e-12);
             assert_close(p->pressure_rating, psi * PSI, 1e-12);

@@ -650,12 +650,17 @@ static void words_choose_rows_of_the_catalogue(void **state)
         size_t word_count, rows;
         const char *holds;
     } ROWS[] = {{"pipes", {"C900", "12in"}, 2, 3, "PVC-C900-DR25-12in"},
-                {"pipes", {"c900", "dr18", "8IN"}, 3, 2, "PVC-C900-DR18-18in"},
+                {"pipes", {"c900", "dr18", "8IN"}, 3, 1, "PVC-C900-DR18-8in"},
+                {"pipes", {"dn100", "en 545"}, 2, 4, "DI-EN545-C100-DN100"},
+                {"pipes", {"C900", "dr32", "48in"}, 3, 0, ""},
+                {"pipes", {"C900", "dr32.5", "48in"}, 3, 1, "PVC-C900-DR32.5-48in"},
+                {"pipes", {"C900", "5-48in"}, 2, 0, ""},
                 {"pipes", {"EN 545", "DN600"}, 2, 5, "DI-EN545-C100-DN600"},
                 {"soils", {"usda"}, 1, 4, "1200"},
                 {"soils", {"building code", "sand-"}, 2, 1, "sand-SP-by-gradient-IBC"},
                 {"valves", {"weisbach"}, 1, 3, "gate-circular"},
                 {"rules", {"test"}, 1, 1, "under test 1.13"},
+                {"rules", {"2280"}, 1, 1, "1.10 on bearings of the soils AS2280 alone"},
                 {"materials", {"plastic"}, 1, 0, ""},
                 {NULL, {"derived"}, 1, 90 + 3 + 1, "Renton"}};
     kent_catalogue *c = NULL;
