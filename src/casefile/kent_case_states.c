@@ -67,7 +67,7 @@ void kent_fill_state(kent_filling *f, kent_record *record, size_t index)
         .roughness_factor = kent_record_number_or(record, "roughness_factor", 1.0),
         .place = record->place};
     kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
-    for (size_t i = 0; i < count && record->sound && !f->reader.failed; i++) {
+    for (size_t i = 0; i < count && !f->reader.failed; i++) {
         fill_level(f, record, kent_twig_child(levels, i), s);
     }
 }

@@ -350,7 +350,8 @@ static int word_index(const char *words, const char *word, bool *later)
     return -1;
 }
 
-/* The word of this version nearest to a misspelt one, into out; "": none is near. */
+/* The word of this version nearest to a misspelt one, into out; "": none is, or
+ * several are alike. */
 static void nearest_word(const char *words, const char *word, char *out, size_t size)
 {
     size_t least = SIZE_MAX;
@@ -360,6 +361,7 @@ static void nearest_word(const char *words, const char *word, char *out, size_t 
         char candidate[40];
         (void)snprintf(candidate, sizeof candidate, "%.*s", (int)length, p);
         const size_t distance = kent_text_misspelling(candidate, word);
+        if (p[0] != '~' && distance == least) out[0] = '\0';
         if (p[0] != '~' && distance < least) {
             least = distance;
             (void)snprintf(out, size, "%s", candidate);

@@ -364,6 +364,20 @@ static void test_below_still_water(const watch *w)
                    kent_said_of(KENT_PRESSURE, m->units, still).s);
 }
 
+/* A level of still water of the case's own presses less than its reservoirs do. */
+static void still_water_below_its_levels(const watch *w)
+{
+    const kent_model *m = w->m;
+    const double level = highest_level(m);
+    if (!(m->loads.static_level < level)) return; /* NAN: none is given */
+    kent_notes_add(
+        w->cautions,
+        "static_level, %s, is below the highest water level of the case, %s: "
+        "a main at rest is pressed harder than the case 'static' says",
+        kent_said_of(KENT_LENGTH, m->units, m->loads.static_level).s,
+        kent_said_of(KENT_LENGTH, m->units, level).s);
+}
+
 /* By volume at one atmosphere; sewage and aerated water hold less than 1 %. From
  * memory. */
 static void much_free_gas(const watch *w)
@@ -374,6 +388,78 @@ static void much_free_gas(const watch *w)
         "gas_content is %.3g: more than a hundredth of free gas by volume is "
         "no longer a full pipe",
         w->m->gas_content);
+}
+
+/* ---- stations ---------------------------------------------------------------------
+ */
+
+/* A leg may be counted in plan or in space, along its arc or its tangents; beyond that
+ * 1 %, as a length may be off, and 0.1 m, as stations are rounded. */
+static const double STATION_SHARE = 0.01, STATION_ROUNDING = 0.1;
+
+/* m, by how much the stations of the leg that ends at a stop are off the ground. */
+static double station_gap(const kent_model *m, size_t stop)
+{
+    const kent_vec3 leg =
+        kent_vec3_sub(m->points[m->route[stop]].at, m->points[m->route[stop - 1]].at);
+    const double along = m->chainage[stop] - m->chainage[stop - 1];
+    const double least = fmin(along, hypot(leg.x, leg.y)); /* NAN: no x and y */
+    const double most = fmax(along, kent_vec3_length(leg));
+    const double counted = m->station[stop] - m->station_on[stop - 1];
+    return fmax(least - counted, counted - most) - STATION_SHARE * most -
+           STATION_ROUNDING;
+}
+
+static void stations_off_the_ground(const watch *w)
+{
+    const kent_model *m = w->m;
+    found f = {0};
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        const kent_pipe *p = &m->pipes[i];
+        for (size_t k = 1; k < p->route_count; k++) {
+            const size_t stop = p->route_first + k;
+            const double gap = station_gap(m, stop);
+            if (gap > 0.0) find(&f, m->points[m->route[stop]].id, stop, gap);
+        }
+    }
+    if (f.count == 0) return;
+    const size_t off = f.worst;
+    kent_text words = {0};
+    kent_text_add(
+        &words,
+        "stations do not fit coordinates or lengths: \"%s\" is counted %s on from "
+        "\"%s\" "
+        "and lies %s from it; a misread station, or a station_ahead left out?",
+        m->points[m->route[off]].id,
+        kent_said_of(KENT_LENGTH, m->units, m->station[off] - m->station_on[off - 1]).s,
+        m->points[m->route[off - 1]].id,
+        kent_said_of(KENT_LENGTH, m->units, m->chainage[off] - m->chainage[off - 1]).s);
+    tell(w, &f, "point", kent_text_of(&words));
+    kent_text_clear(&words);
+}
+
+/* A station equation that counts back makes two places of one station. */
+static void zones_at_two_places(const watch *w)
+{
+    const kent_model *m = w->m;
+    for (size_t i = 0; i < m->ground_zone_count; i++) {
+        const kent_ground_zone *z = &m->ground_zones[i];
+        const kent_pipe *p = &m->pipes[z->pipe];
+        for (size_t k = 1; k + 1 < p->route_count; k++) {
+            const size_t stop = p->route_first + k;
+            const bool twice =
+                fmax(z->from, m->station_on[stop]) < fmin(z->to, m->station[stop]);
+            if (!twice) continue;
+            kent_notes_add(
+                w->cautions,
+                "ground_zone on \"%s\" from %s to %s: stations there are "
+                "counted before \"%s\" and again after it, and the zone holds "
+                "at both places",
+                p->id, kent_said_of(KENT_LENGTH, m->units, z->from).s,
+                kent_said_of(KENT_LENGTH, m->units, z->to).s,
+                m->points[m->route[stop]].id);
+        }
+    }
 }
 
 /* ---- ground ---------------------------------------------------------------------- */
@@ -444,6 +530,9 @@ static const struct {
     {less_than_nothing, true},
     {main_above_its_water, true},
     {test_below_still_water, true},
+    {still_water_below_its_levels, true},
+    {stations_off_the_ground, true},
+    {zones_at_two_places, true},
     {much_free_gas, true},
     {unlikely_cover, true},
     {bearing_beyond_the_ground, false},

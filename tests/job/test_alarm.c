@@ -306,9 +306,90 @@ static void a_test_below_still_water_is_seen(void **state)
     assert_raised(&b, "the site test, 2.93 bar at E, is below the pressure of still");
     b.model->loads.test_gauge = kent_model_point_index(b.model, "P"); /* in mid-run */
     assert_raised(&b, "the site test, 2.93 bar at P, is below the pressure of still");
-    b.model->loads.static_level = 39.0; /* 284 kPa: stated, it holds */
-    assert_quiet(&b);
+    b.model->loads.static_level = 39.0; /* 284 kPa: stated, it holds, and is named */
+    assert_raised(&b, "static_level, 39.00 m, is below");
     kent_build_clear(&b);
+}
+
+static void a_level_of_still_water_below_a_reservoir_is_seen(void **state)
+{
+    (void)state;
+    kent_build b = quiet_main(); /* its tank stands at 40 m */
+    kent_build_derive(&b);
+    b.model->loads.static_level = 40.0;
+    assert_quiet(&b);
+    b.model->loads.static_level = 39.0;
+    assert_raised(&b, "static_level, 39.00 m, is below the highest water level of the "
+                      "case, 40.00 m");
+    kent_build_clear(&b);
+}
+
+/* P is 100 m from R, E 200 m from P; stations may be off by 1 % and 0.1 m. */
+static void stations_off_the_ground_are_seen(void **state)
+{
+    (void)state;
+    static const struct {
+        double p, e; /* m */
+        const char *words;
+    } ROWS[] = {
+        {101.05, 301.05, NULL},
+        {101.2, 301.2,
+         "point P: stations do not fit coordinates or lengths: \"P\" is "
+         "counted 101.20 m on from \"R\" and lies 100.00 m from it"},
+        {98.8, 298.8, "\"P\" is counted 98.80 m on"},
+        {100.0, 400.0, "point E: stations do not fit"},
+        {150.0, 450.0,
+         "points P, E: stations do not fit coordinates or lengths: \"E\" "
+         "is counted 300.00 m on from \"P\" and lies 200.00 m from it"},
+    };
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        kent_build b = quiet_main();
+        b.model->points[0].station = 0.0;
+        b.model->points[1].station = ROWS[i].p;
+        b.model->points[2].station = ROWS[i].e;
+        kent_build_derive(&b);
+        if (ROWS[i].words) {
+            assert_raised(&b, ROWS[i].words);
+        } else {
+            assert_quiet(&b);
+        }
+        kent_build_clear(&b);
+    }
+}
+
+/* Counting goes on from 50 m at P, which is reached at 100 m. */
+static void a_zone_whose_stations_are_counted_twice_is_seen(void **state)
+{
+    (void)state;
+    static const struct {
+        double from, to; /* m */
+        bool twice;
+    } ROWS[] = {{0.0, 50.0, false},
+                {0.0, 51.0, true},
+                {99.0, 250.0, true},
+                {100.0, 250.0, false}};
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        kent_build b = quiet_main();
+        b.model->points[0].station = 0.0;
+        b.model->points[1].station = 100.0;
+        b.model->points[1].station_ahead = 50.0;
+        b.model->ground_zones = kent_alloc(1, sizeof *b.model->ground_zones);
+        assert_non_null(b.model->ground_zones);
+        b.model->ground_zones[b.model->ground_zone_count++] =
+            (kent_ground_zone){.from = ROWS[i].from,
+                               .to = ROWS[i].to,
+                               .soil = -1,
+                               .cover = 2.0,
+                               .water_table = (double)NAN,
+                               .trench = -1};
+        kent_build_derive(&b);
+        if (ROWS[i].twice) {
+            assert_raised(&b, "counted before \"P\" and again after it");
+        } else {
+            assert_quiet(&b);
+        }
+        kent_build_clear(&b);
+    }
 }
 
 static void more_than_a_hundredth_of_free_gas_is_seen(void **state)
@@ -406,6 +487,9 @@ int main(void)
         cmocka_unit_test(a_port_cannot_have_less_than_no_pressure_at_all),
         cmocka_unit_test(a_main_above_its_own_water_is_seen),
         cmocka_unit_test(a_test_below_still_water_is_seen),
+        cmocka_unit_test(a_level_of_still_water_below_a_reservoir_is_seen),
+        cmocka_unit_test(stations_off_the_ground_are_seen),
+        cmocka_unit_test(a_zone_whose_stations_are_counted_twice_is_seen),
         cmocka_unit_test(more_than_a_hundredth_of_free_gas_is_seen),
         cmocka_unit_test(a_cover_of_decimetres_or_of_ten_metres_is_seen),
         cmocka_unit_test(a_bearing_beyond_the_ground_s_own_is_seen),
