@@ -12,6 +12,9 @@ double kent_span_still_pressure(const kent_model *m, const kent_span *span)
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         highest = fmax(highest, m->fixed_levels[i].level);
     }
+    for (size_t i = 0; i < m->state_level_count; i++) {
+        highest = fmax(highest, m->state_levels[i].level);
+    }
     const double depth = highest - kent_span_level(m, span, 0.5 * span->length);
     return m->barometric + m->water.density * m->gravity * fmax(0.0, depth);
 }

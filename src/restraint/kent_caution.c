@@ -85,6 +85,52 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
     kent_text_clear(&t);
 }
 
+/* Whether a face could press with less than its factor before the ground gives way by
+ * its own angle and cohesion, although another bearing is stated. source 10.31 */
+static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_soil *s = w->soil;
+    const kent_system units = w->m->units;
+    const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
+
+    if (!s || h->by_sense[KENT_SIDEWAYS] < 0) return;
+    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
+    const double presses = w->use[KENT_SIDEWAYS] * w->site.allowable / c->safety_factor;
+    const double gives = kent_passive_pressure(
+        s->friction_angle, s->cohesion, kent_effective_stress(s->unit_weight, &at));
+    if (!(presses > gives)) return; /* NaN: not known */
+    kent_notes_add(
+        &h->cautions,
+        "soil '%s' gives way at %s by its own friction angle and cohesion at "
+        "this depth, and %s are put on it before any factor: one of its "
+        "values is wrong",
+        s->id, kent_said_of(KENT_STRESS, units, gives).s,
+        kent_said_of(KENT_STRESS, units, presses).s);
+}
+
+/* Only the passive route knows of water; other values hold for the ground as tested. */
+static void caution_wet(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_block *b = &h->block;
+    const kent_site *site = &w->site;
+    const bool base = b->type == KENT_BLOCK_BASE;
+    const bool face = w->demand.load[KENT_SIDEWAYS] > 0.0;
+    double deepest = -INFINITY; /* m below ground, where a stated value is taken */
+
+    if (!w->soil) return;
+    if (face && w->soil->route != KENT_BEARING_PASSIVE) deepest = kent_site_axis(site);
+    if (w->demand.load[KENT_DOWNWARD] > 0.0) {
+        const double foot =
+            base ? 0.5 * site->diameter + b->thickness : 0.5 * b->height;
+        deepest = fmax(deepest, kent_site_axis(site) + foot);
+    }
+    if (!(site->water_table < deepest)) return;
+    kent_notes_add(&h->cautions,
+                   "the block leans on ground under water, and what soil '%s' bears is "
+                   "taken as stated: it must hold for wet ground",
+                   w->soil->id);
+}
+
 /* N: how much of an instant's sideways thrust goes against this one. */
 static double against(const kent_instant *at, kent_vec3 thrust)
 {
@@ -128,7 +174,11 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     for (size_t i = 0; i < w->clear.count; i++) {
         kent_notes_add(&h->cautions, "%s", w->clear.text[i]);
     }
-    if (b->type == KENT_BLOCK_BEARING || b->has_face) caution_bearing(w, h);
+    if (b->type == KENT_BLOCK_BEARING || b->has_face) {
+        caution_bearing(w, h);
+        caution_own_strength(w, h);
+    }
+    caution_wet(w, h);
     if (w->site.hole > 0.0) {
         kent_notes_add(&h->cautions,
                        "the thrust runs along a trench or comes from either side: both "
@@ -184,7 +234,10 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
                        "keep the block clear of the hydrant's drain and its gravel "
                        "pocket, bolts and joints");
     }
-    if (h->soil_beside) caution_bearing(w, h);
+    if (h->soil_beside) {
+        caution_bearing(w, h);
+        caution_own_strength(w, h);
+    }
     if (h->soil_beside && h->held) {
         kent_notes_add(
             &h->cautions,

@@ -15,10 +15,15 @@ static kent_wedge wedge_of(const kent_holding_work *w, const kent_block *b)
     };
 }
 
-/* m: how clear an obstacle is of the wedge on one side (1, or -1 against the thrust).
- */
-static double clearance(const kent_holding_work *w, const kent_holding *h,
-                        const kent_wedge *wedge, const kent_obstacle *o, double side)
+/* How an obstacle lies to the wedge. */
+typedef struct lying {
+    double clear;   /* m, of its near side */
+    bool runs_past; /* a long one, square to its direction, would cross the wedge */
+} lying;
+
+/* On one side: 1, or -1 against the thrust. */
+static lying lying_of(const kent_holding_work *w, const kent_holding *h,
+                      const kent_wedge *wedge, const kent_obstacle *o, double side)
 {
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
     const kent_vec3 thrust = kent_instant_lasting(&c->worst[KENT_SIDEWAYS]);
@@ -27,7 +32,10 @@ static double clearance(const kent_holding_work *w, const kent_holding *h,
     const double along = o->direction.x * x + o->direction.y * y;
     const double across = o->direction.x * y - o->direction.y * x;
 
-    return kent_wedge_clearance(wedge, o->distance * along, o->distance * across);
+    return (lying){
+        .clear = kent_wedge_clearance(wedge, o->distance * along, o->distance * across),
+        .runs_past = o->distance < kent_wedge_farthest(wedge, along, across),
+    };
 }
 
 /* A block through which the thrust may come from either side leans on both. */
@@ -45,18 +53,23 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
     w->reach = kent_wedge_reach(&wedge);
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[first + i];
-        double clear = clearance(w, h, &wedge, o, 1.0);
+        lying it = lying_of(w, h, &wedge, o, 1.0);
         if (leans_both_ways(w, h)) {
-            clear = fmin(clear, clearance(w, h, &wedge, o, -1.0));
+            const lying other = lying_of(w, h, &wedge, o, -1.0);
+            it.clear = fmin(it.clear, other.clear);
+            it.runs_past = it.runs_past || other.runs_past;
         }
-        if (!(clear > 0.0)) {
+        if (!(it.clear > 0.0)) {
             w->obstacle = o;
             return false;
         }
-        kent_notes_add(&w->clear,
-                       "'%s' is clear of the ground that the face leans on by "
-                       "%s",
-                       o->what, kent_said_of(KENT_LENGTH, w->m->units, clear).s);
+        kent_notes_add(
+            &w->clear, "'%s' is clear of the ground that the face leans on by %s%s",
+            o->what, kent_said_of(KENT_LENGTH, w->m->units, it.clear).s,
+            it.runs_past ? " where it is nearest; if it runs on, as a trench "
+                           "does, it crosses that ground: a place farther "
+                           "along it would tell"
+                         : "");
     }
     return true;
 }

@@ -20,3 +20,14 @@ double kent_wedge_clearance(const kent_wedge *wedge, double along, double across
     if (along <= 0.0) return fmax(0.0, hypot(fmax(0.0, beside), along));
     return fmax(0.0, fmax(ahead, beside));
 }
+
+double kent_wedge_farthest(const kent_wedge *wedge, double along, double across)
+{
+    const double reach = kent_wedge_reach(wedge);
+    const double spread = tan(QUARTER - 0.5 * wedge->friction_angle);
+    const double near = wedge->front * along + wedge->half_width * fabs(across);
+    const double far = (wedge->front + reach) * along +
+                       (wedge->half_width + reach * spread) * fabs(across);
+
+    return fmax(near, far);
+}

@@ -234,6 +234,27 @@ static void free_gas_slows_waves_by_the_still_pressure_of_each_span(void **state
     }
 }
 
+/* A state in which the water stands higher presses the gas together the more. */
+static void free_gas_is_pressed_by_the_highest_level_of_any_state(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "R", 0.0, 0.0, 40.0);
+    (void)kent_build_point(&b, "E", 800.0, 0.0, 40.0);
+    (void)kent_build_pipe(&b, "A", "R E", 0.6, (double)NAN);
+    (void)kent_build_fixed_level(&b, "R", 92.0);
+    b.model->state_levels = kent_alloc(2, sizeof *b.model->state_levels);
+    assert_non_null(b.model->state_levels);
+    b.model->state_levels[0] = (kent_state_level){.fixed_level = 0, .level = 80.0};
+    b.model->state_levels[1] = (kent_state_level){.fixed_level = 0, .level = 100.0};
+    b.model->state_level_count = 2;
+    b.model->gas_content = 1e-3;
+    kent_build_derive(&b);
+    assert_close(kent_span_still_pressure(b.model, &b.model->spans[0]),
+                 101325.0 + 1000.0 * 9.80665 * 60.0, 1e-12);
+    kent_build_clear(&b);
+}
+
 static void a_given_wave_speed_stays_whatever_gas_there_is(void **state)
 {
     (void)state;
@@ -260,6 +281,7 @@ static void deriving_twice_gives_the_same(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(free_gas_is_pressed_by_the_highest_level_of_any_state),
         cmocka_unit_test(a_route_is_cut_where_another_pipe_meets_it),
         cmocka_unit_test(points_in_between_are_no_nodes),
         cmocka_unit_test(span_lengths_add_up_to_the_pipe),

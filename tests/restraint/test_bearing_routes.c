@@ -236,9 +236,55 @@ static void every_line_of_every_route_follows_from_those_above(void **state)
     }
 }
 
+/* The axis lies at 1.81 m. Only passive pressure is worked out with ground water. */
+static void a_stated_bearing_under_water_is_doubted(void **state)
+{
+    (void)state;
+    static const kent_bearing_route routes[] = {
+        KENT_BEARING_CONSTANT, KENT_BEARING_BY_DEPTH, KENT_BEARING_GRADIENT,
+        KENT_BEARING_PASSIVE};
+    for (size_t i = 0; i < sizeof routes / sizeof routes[0]; i++) {
+        for (int wet = 0; wet < 2; wet++) {
+            kent_build b = main_in(routes[i], 0.0);
+            b.model->ground.cover = 1.5;
+            b.model->soils[0].allowable_bearing = 100e3;
+            b.model->ground.water_table = wet ? 1.80 : 1.82;
+            kent_restraints *r = sized(&b);
+            assert_int_equal(at_b(&b, r)->block.type, KENT_BLOCK_BEARING);
+            assert_true(kent_hand_says(at_b(&b, r), "leans on ground under water") ==
+                        (wet && routes[i] != KENT_BEARING_PASSIVE));
+            finish(&b, r);
+        }
+    }
+}
+
+/* 20 degrees, no cohesion: Kp = 2.0396, at 1.81 m of 19 kN/m3 70.14 kPa. A stated
+ * bearing q is filled up to a hundredth at a factor of 1.5, so that q/1.5 are put on.
+ */
+static void a_bearing_beyond_the_soils_own_strength_is_told(void **state)
+{
+    (void)state;
+    static const double bearing[] = {104e3, 108e3};
+    for (int i = 0; i < 2; i++) {
+        kent_build b = main_in(KENT_BEARING_CONSTANT, 0.0);
+        b.model->ground.cover = 1.5;
+        b.model->soils[0].friction_angle = 20.0 * DEGREE;
+        b.model->soils[0].cohesion = 0.0;
+        b.model->soils[0].allowable_bearing = bearing[i];
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = at_b(&b, r);
+        const double put = factored() / 1.5 / (h->block.width * h->block.height);
+        assert_true((put > 70.14e3) == (i == 1));
+        assert_true(kent_hand_says(h, "gives way at 70.1 kPa by its own") == (i == 1));
+        finish(&b, r);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_stated_bearing_under_water_is_doubted),
+        cmocka_unit_test(a_bearing_beyond_the_soils_own_strength_is_told),
         cmocka_unit_test(the_bearing_at_the_axis_sizes_the_face),
         cmocka_unit_test(deeper_ground_of_a_gradient_takes_a_smaller_face),
         cmocka_unit_test(above_the_first_row_of_a_table_there_is_no_block),

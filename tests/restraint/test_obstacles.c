@@ -123,6 +123,33 @@ static void a_block_leans_on_nothing_but_ground(void **state)
     }
 }
 
+/* At 30 degrees a wedge 2 m deep is 1 m wide at the face and 1 + 2 x 2 m at its end
+ * (2 sqrt(3)/sqrt(3) = 2 on either side): 2.5 m beside the thrust, 4.06 m ahead. */
+static void what_runs_on_beside_a_face_crosses_its_wedge_farther_along(void **state)
+{
+    (void)state;
+    const kent_wedge wedge = {0.6, 0.5, 2.0, 30.0 * DEGREE};
+    assert_close(kent_wedge_farthest(&wedge, 0.0, 1.0), 2.5, 1e-12);
+    assert_close(kent_wedge_farthest(&wedge, 0.0, -1.0), 2.5, 1e-12);
+    assert_close(kent_wedge_farthest(&wedge, 1.0, 0.0), 0.6 + 2.0 * sqrt(3.0), 1e-12);
+    assert_close(kent_wedge_farthest(&wedge, -1.0, 0.0), -0.6, 1e-12);
+
+    const kent_block b = block_alone();
+    const double beside = 0.5 * b.width + 1.81 + 0.5 * b.height;
+    const double phi = 30.0 * DEGREE;
+    assert_true(held_with(phi, KENT_THRUST_BLOCK, 0.0, -(beside - 0.02), "if it runs"));
+    assert_true(held_with(phi, KENT_THRUST_BLOCK, 0.0, beside - 0.02, "if it runs on"));
+    kent_build c = main_that_ends(phi, KENT_THRUST_BLOCK);
+    put_obstacle(&c, 0.0, beside + 0.02);
+    kent_build_derive(&c);
+    kent_restraints *r = kent_hand_size(&c, TEST, 1);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&c, "E")];
+    assert_true(kent_hand_says(h, "'sewer' is clear"));
+    assert_false(kent_hand_says(h, "if it runs on"));
+    kent_restraints_free(r);
+    kent_build_clear(&c);
+}
+
 static void
 what_stands_behind_counts_only_for_a_block_that_holds_both_ways(void **state)
 {
@@ -156,6 +183,7 @@ static void a_refusal_says_where_and_the_ways_out(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(what_runs_on_beside_a_face_crosses_its_wedge_farther_along),
         cmocka_unit_test(the_wedge_reaches_and_widens_by_the_angle_of_the_soil),
         cmocka_unit_test(a_block_leans_on_nothing_but_ground),
         cmocka_unit_test(
