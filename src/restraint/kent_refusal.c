@@ -181,8 +181,12 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         kent_text_add(t,
                       "no block: it would stand on soil '%s', whose bearing under a "
                       "base is not stated, and one that goes with depth is for faces; "
-                      "give vertical_bearing, or ",
+                      "give vertical_bearing",
                       w->soil->id);
+        if (kent_soil_source(w->soil) == KENT_CATALOGUE) {
+            kent_text_add(t, " to an element of soils, from = \"%s\"", w->soil->id);
+        }
+        kent_text_add(t, ", or ");
         break;
     case KENT_FAULT_OBSTACLE:
         refuse_obstacle(w, t);

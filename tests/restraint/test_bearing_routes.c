@@ -161,11 +161,28 @@ static void a_base_wants_a_bearing_of_its_own(void **state)
             if (given) b.model->soils[0].vertical_bearing = 100e3;
             kent_restraints *r = sized(&b);
             assert_true(at_b(&b, r)->held == (given > 0));
-            assert_true(kent_hand_says(at_b(&b, r), "give vertical_bearing") ==
+            assert_true(kent_hand_says(at_b(&b, r), "give vertical_bearing, or ") ==
                         (given == 0));
             finish(&b, r);
         }
     }
+}
+
+/* A row of the catalogue cannot be added to: the case takes it over. */
+static void a_catalogues_soil_is_to_be_taken_over_for_a_base(void **state)
+{
+    (void)state;
+    kent_build b = main_in(KENT_BEARING_BY_DEPTH, 20.0);
+    kent_soil *soil = &b.model->soils[0];
+    soil->place.line = 0;
+    (void)snprintf(soil->source, sizeof soil->source, "a handbook (seen)");
+    kent_restraints *r = sized(&b);
+    char words[120];
+    (void)snprintf(words, sizeof words,
+                   "give vertical_bearing to an element of soils, from = \"%s\", or ",
+                   soil->id);
+    kent_hand_expect(at_b(&b, r), words);
+    finish(&b, r);
 }
 
 /* The cover that is said to help does, with what the ground bears there; 5 cm less does
@@ -291,6 +308,7 @@ int main(void)
         cmocka_unit_test(passive_bearing_without_its_values_is_refused_by_their_names),
         cmocka_unit_test(where_a_table_bears_nothing_there_is_no_block),
         cmocka_unit_test(a_base_wants_a_bearing_of_its_own),
+        cmocka_unit_test(a_catalogues_soil_is_to_be_taken_over_for_a_base),
         cmocka_unit_test(the_cover_that_would_serve_counts_on_deeper_ground),
         cmocka_unit_test(any_route_is_doubted_where_it_takes_too_much),
         cmocka_unit_test(every_line_of_every_route_follows_from_those_above),
