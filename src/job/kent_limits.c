@@ -3,6 +3,10 @@
 #include "kent_overload.h"
 #include "kent_said.h"
 
+#include <math.h>
+
+enum { NAMED = 6 }; /* places told of one caution; the rest are counted */
+
 /* A peak in the last 2 % of the duration may not be the last word. */
 static const double LATE_SHARE = 0.02;
 
@@ -35,10 +39,11 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
     size_t named = 0;
     for (size_t i = 0; i < m->point_count; i++) {
         if (!run->touched[i]) continue;
-        if (named < 6) kent_text_add(&where, named ? ", %s" : "%s", m->points[i].id);
+        if (named < NAMED)
+            kent_text_add(&where, named ? ", %s" : "%s", m->points[i].id);
         named++;
     }
-    if (named > 6) kent_text_add(&where, " and %zu more", named - 6);
+    if (named > NAMED) kent_text_add(&where, " and %zu more", named - NAMED);
     kent_notes_add(
         &r->cautions,
         "%s: the pressure falls below the vapour limit at or next to %s; this "
@@ -73,19 +78,39 @@ static void judge_lateness(kent_results *r, const kent_scenario_result *run)
         name_of(m, run).s, m->points[highest].id, peak->highest_at, s->duration);
 }
 
+/* One sentence for all: a street main has many short spans. */
 static void judge_grid(kent_results *r, const kent_scenario_result *run)
 {
     const kent_model *m = r->model;
+    const kent_grid *grid = run->grid;
+    kent_text spans = {0};
+    size_t count = 0, worst = 0;
+    double most = 0.0; /* logarithm of how far a wave speed is moved */
+
     for (size_t i = 0; i < m->span_count; i++) {
-        if (!run->grid->misses[i]) continue;
+        if (!grid->misses[i]) continue;
+        const double moved =
+            fabs(log(grid->wave_speed_used[i] / m->spans[i].wave_speed));
+        if (moved > most) worst = i;
+        most = fmax(most, moved);
+        if (count < NAMED) kent_text_add(&spans, count ? ", %s" : "%s", m->spans[i].id);
+        count++;
+    }
+    if (count > NAMED) kent_text_add(&spans, " and %zu more", count - NAMED);
+    if (count > 0) {
         kent_notes_add(
             &r->cautions,
-            "span %s does not fit the common step: its wave speed %s is marched as %s "
-            "(inertia kept)",
-            m->spans[i].id,
-            kent_said_whole(KENT_SPEED, m->units, m->spans[i].wave_speed).s,
-            kent_said_whole(KENT_SPEED, m->units, run->grid->wave_speed_used[i]).s);
+            "%s %s %s not fit the common step: the wave speed %s%s%s is marched as %s "
+            "(inertia kept)%s",
+            count > 1 ? "spans" : "span", kent_text_of(&spans),
+            count > 1 ? "do" : "does",
+            kent_said_whole(KENT_SPEED, m->units, m->spans[worst].wave_speed).s,
+            count > 1 ? " of " : "", count > 1 ? m->spans[worst].id : "",
+            kent_said_whole(KENT_SPEED, m->units, grid->wave_speed_used[worst]).s,
+            count > 1 ? ", those of the others are moved by less" : "");
     }
+    r->cautions.failed = r->cautions.failed || spans.failed;
+    kent_text_clear(&spans);
 }
 
 void kent_limits_judge(kent_results *r)

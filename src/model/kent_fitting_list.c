@@ -1,5 +1,7 @@
 #include "kent_model_internal.h"
 
+enum { NAMED = 6 }; /* ends told of by name; the rest are counted */
+
 /* The note on each point; complains of notes that belong nowhere. */
 static void sort_notes(const kent_model *m, kent_layout *l, kent_complaints *complaints)
 {
@@ -54,6 +56,43 @@ static void keep_last(kent_model *m)
     m->port_count += f->port_count;
 }
 
+/* Whether a pipe ends at the point in an outflow, of which nothing more is said. */
+static bool ends_unsaid(const kent_model *m, const kent_layout *l, int point)
+{
+    return l->device[point].kind == KENT_DEVICE_OUTFLOW && l->note[point] < 0 &&
+           l->first[point + 1] - l->first[point] == 1 &&
+           !kent_layout_runs_through(m, l, l->stop[l->first[point]]);
+}
+
+/* A main that goes on there makes no thrust; a blank, a shut valve or a hydrant does.
+ */
+static void caution_ends(kent_model *m, const kent_layout *l)
+{
+    kent_text names = {0};
+    size_t count = 0;
+    const char *first = "";
+
+    for (size_t i = 0; i < m->outflow_count; i++) {
+        const int point = m->outflows[i].point;
+        if (!ends_unsaid(m, l, point)) continue;
+        if (count == 0) first = m->points[point].id;
+        if (count < NAMED) {
+            kent_text_add(&names, count ? ", %s" : "%s", m->points[point].id);
+        }
+        count++;
+    }
+    if (count > NAMED) kent_text_add(&names, " and %zu more", count - NAMED);
+    if (count > 0) {
+        kent_notes_add(&m->cautions,
+                       "%s at %s: the pipe is taken to go on, so no thrust is worked "
+                       "out there; where it ends, write fittings = ( { at = \"%s\"; "
+                       "type = \"dead-end\"; } ), or type = \"hydrant\"",
+                       count > 1 ? "outflows" : "outflow", kent_text_of(&names), first);
+    }
+    m->cautions.failed = m->cautions.failed || names.failed;
+    kent_text_clear(&names);
+}
+
 kent_status kent_fitting_list(kent_model *m, kent_layout *l,
                               kent_complaints *complaints)
 {
@@ -79,5 +118,6 @@ kent_status kent_fitting_list(kent_model *m, kent_layout *l,
             keep_last(m);
         }
     }
+    caution_ends(m, l);
     return KENT_OK;
 }

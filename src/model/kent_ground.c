@@ -107,10 +107,9 @@ static void check_zone(const kent_model *m, const kent_ground_zone *zone,
         "ground_zone on \"%s\": it reaches from %s to %s, the pipe from "
         "%s to %s; keep the zone within its pipe, and give the pipe "
         "beyond a zone of its own",
-        pipe->id, kent_said_of(KENT_LENGTH, m->units, zone->from).s,
-        kent_said_of(KENT_LENGTH, m->units, zone->to).s,
-        kent_said_of(KENT_LENGTH, m->units, least).s,
-        kent_said_of(KENT_LENGTH, m->units, most).s);
+        pipe->id, kent_said_station(m->units, zone->from).s,
+        kent_said_station(m->units, zone->to).s, kent_said_station(m->units, least).s,
+        kent_said_station(m->units, most).s);
 }
 
 /* ---- levels of the ground -------------------------------------------------------- */

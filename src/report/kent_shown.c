@@ -145,6 +145,9 @@ static kent_shown bore(double size, kent_system system)
     return system == KENT_SI ? shown("%.0f", value) : shown("%.3g", value);
 }
 
+enum { LOOKED_AT = 1000 };                 /* pipes, for one of the same outside */
+static const double SAME_OUTSIDE = 0.5e-3; /* m */
+
 /* The size in a class's id: "600" of "DI-EN545-C30-DN600" in SI, "24" of
  * "DI-C151-PC200-24in" in US. False: its id has none of this system. */
 static bool nominal_of(const char *pipe_class, kent_system system, kent_shown *out)
@@ -160,17 +163,36 @@ static bool nominal_of(const char *pipe_class, kent_system system, kent_shown *o
     return true;
 }
 
-/* Size of the first port with this bore. */
+/* The size of a pipe of the case with a class and this outside diameter (m), on which
+ * the same castings fit. */
+static bool nominal_like(const kent_model *m, double outside, kent_system system,
+                         kent_shown *out)
+{
+    for (size_t i = 0; i < m->pipe_count && i < LOOKED_AT; i++) {
+        const kent_pipe *pipe = &m->pipes[i];
+        if (!(fabs(pipe->outside_diameter - outside) < SAME_OUTSIDE)) continue;
+        if (nominal_of(pipe->pipe_class, system, out)) return true;
+    }
+    return false;
+}
+
+/* Size of the first port with this bore, or of the branch without a pipe. */
 static kent_shown size_of(const kent_model *m, const kent_fitting *fitting,
                           double inside, kent_system system)
 {
     kent_shown nominal;
+    double outside = fitting->branch.end != KENT_BRANCH_NONE &&
+                             fabs(fitting->branch.inside_diameter - inside) < 1e-9
+                         ? fitting->branch.outside_diameter
+                         : (double)NAN;
     for (size_t i = 0; i < fitting->port_count; i++) {
         const kent_port *port = &m->ports[fitting->port_first + i];
         if (port->span < 0 || fabs(port->inside_diameter - inside) > 1e-9) continue;
         const kent_pipe *pipe = &m->pipes[m->spans[port->span].pipe];
         if (nominal_of(pipe->pipe_class, system, &nominal)) return nominal;
+        outside = pipe->outside_diameter;
     }
+    if (nominal_like(m, outside, system, &nominal)) return nominal;
     return bore(inside, system);
 }
 

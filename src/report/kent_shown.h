@@ -50,8 +50,8 @@ kent_shown kent_shown_push(const kent_model *m, const kent_fitting *fitting,
 kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
                               kent_system system, kent_room room);
 
-/* The largest port's nominal size by its pipe's class ("600", "24"), else its bore in
- * mm or in. */
+/* The largest port's nominal size by its pipe's class ("600", "24"), else by that of a
+ * pipe with the same outside diameter, else its bore in mm or in. */
 kent_shown kent_shown_size(const kent_model *m, const kent_fitting *fitting,
                            kent_system system);
 

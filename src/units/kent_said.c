@@ -49,3 +49,20 @@ kent_said kent_said_whole(kent_kind kind, kent_system system, double si)
 {
     return with_decimals(kind, system, si, 0);
 }
+
+kent_said kent_said_station(kent_system system, double station)
+{
+    const double shown = kent_units_shown(KENT_LENGTH, system, station);
+    if (!(fabs(shown) < 1e12)) return kent_said_of(KENT_LENGTH, system, station);
+    const long large = system == KENT_SI ? 1000 : 100; /* what stands before the + */
+    const long cents = lround(fabs(shown) * 100.0), whole = cents / 100;
+    const long share = cents % 100;
+    kent_said out;
+    int length = snprintf(out.s, sizeof out.s, "%s%ld+%0*ld",
+                          shown < 0.0 && cents > 0 ? "-" : "", whole / large,
+                          system == KENT_SI ? 3 : 2, whole % large);
+    if (share == 0 || length < 0) return out;
+    length += snprintf(out.s + length, sizeof out.s - (size_t)length, ".%02ld", share);
+    if (share % 10 == 0) out.s[length - 1] = '\0';
+    return out;
+}

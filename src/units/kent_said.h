@@ -15,4 +15,7 @@ kent_said kent_said_unit(kent_kind kind, kent_system system);
 kent_said kent_said_of(kent_kind kind, kent_system system, double si);
 kent_said kent_said_whole(kent_kind kind, kent_system system, double si);
 
+/* A station (m), "3+700" or "12+34.5" ft, to 0.01 where it is not whole. */
+kent_said kent_said_station(kent_system system, double station);
+
 #endif

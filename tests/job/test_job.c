@@ -2,6 +2,7 @@
 #include "kent_check.h"
 #include "kent_job.h"
 
+#include <stdio.h>
 #include <string.h>
 
 /* A gravity main 1 km long from a tank at 60 m to a valve that discharges at 20 m, with
@@ -191,6 +192,56 @@ static void a_peak_at_the_very_end_asks_for_a_longer_run(void **state)
     kent_build_clear(&b);
 }
 
+/* Stubs of 5 m, 6 m ... beside 2 km: one sentence names them, and the wave speed that
+ * is moved most, the shortest's. */
+static void short_spans_are_named_in_one_sentence(void **state)
+{
+    (void)state;
+    for (int stubs = 1; stubs <= 7; stubs += 6) {
+        kent_build b = kent_build_new();
+        kent_error err = {0};
+        kent_results *r = NULL;
+        kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+        kent_build_point(&b, "J", 2000.0, 0.0, 0.0);
+        kent_build_pipe(&b, "A", "R J", 0.5, 1000.0);
+        kent_build_fixed_level(&b, "R", 60.0);
+        for (int i = 1; i <= stubs; i++) {
+            char id[8], pipe[8], route[16];
+            (void)snprintf(id, sizeof id, "D%d", i);
+            (void)snprintf(pipe, sizeof pipe, "S%d", i);
+            (void)snprintf(route, sizeof route, "J D%d", i);
+            kent_build_point(&b, id, 2000.0 + 4.0 + i, 0.0, 0.0);
+            kent_build_pipe(&b, pipe, route, 0.1, 1000.0);
+            kent_build_outflow(&b, id, 0.002);
+        }
+        kent_build_ramp(&b, kent_build_scenario(&b, "stop", 10.0), KENT_EVENT_OUTFLOW,
+                        0, 0.0, 2.0, 0.0);
+        b.model->solver.grid_check = false;
+        kent_build_derive(&b);
+        if (kent_job_run(b.model, &(kent_job_options){.threads = 1}, &r, &err)) {
+            fail_msg("%s: %s", err.where, err.what);
+        }
+        size_t said = 0;
+        const char *text = "";
+        for (size_t i = 0; i < r->cautions.count; i++) {
+            if (!strstr(r->cautions.text[i], "fit the common step")) continue;
+            text = r->cautions.text[i];
+            said++;
+        }
+        assert_int_equal(said, 1);
+        if (stubs == 1) {
+            assert_non_null(strstr(text, "span S1 does not fit the common step: the "
+                                         "wave speed 1000 m/s is marched as "));
+        } else {
+            assert_non_null(strstr(text, "spans S1, S2, S3, S4, S5, S6 and 1 more do "
+                                         "not fit"));
+            assert_non_null(strstr(text, "1000 m/s of S1 is marched as "));
+        }
+        kent_results_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 static void a_sheet_of_ports_runs_without_a_network(void **state)
 {
     (void)state;
@@ -218,6 +269,7 @@ int main(void)
         cmocka_unit_test(a_rating_that_is_passed_is_said_and_sets_the_limit),
         cmocka_unit_test(a_rating_is_held_against_water_at_rest_too),
         cmocka_unit_test(a_peak_at_the_very_end_asks_for_a_longer_run),
+        cmocka_unit_test(short_spans_are_named_in_one_sentence),
         cmocka_unit_test(a_sheet_of_ports_runs_without_a_network),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -39,7 +39,7 @@ static kent_build curve(double degrees, double radius)
     kent_build_pipe(&b, "A", "R P E", 0.3, 1000.0);
     b.model->points[1].curve_radius = radius;
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     return b;
 }
 
@@ -159,7 +159,7 @@ static kent_build joints(const double sign[6])
     const int pipe = kent_build_pipe(&b, "A", "R 1 2 3 4 5 6 E", 0.3, 1000.0);
     b.model->pipes[pipe].joint_deflection = 3.0 * DEGREE;
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     return b;
 }
 

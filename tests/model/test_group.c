@@ -18,7 +18,7 @@ static kent_build offset_in_plan(double gap, kent_joint joint)
     kent_build_pipe(&b, "A", "R P Q E", 0.6, 1000.0);
     b.model->pipes[0].joint = joint;
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     return b;
 }
 
@@ -176,7 +176,7 @@ static void a_vertical_offset_is_one_and_pushes_nowhere(void **state)
     kent_build_point(&b, "E", 100.0, 0.0, 10.0);
     kent_build_pipe(&b, "A", "R 1 2 3 4 E", 0.6, 1000.0);
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     kent_build_derive(&b); /* push-on: four bends, two of each kind */
     assert_int_equal(b.model->fitting_count, 4);
     assert_int_equal(fitting(&b, "1")->orientation, KENT_CREST);
@@ -212,7 +212,7 @@ static void a_group_may_end_within_itself(void **state)
     kent_build_pipe(&b, "C", "T D", 0.3, 1000.0);
     b.model->pipes[1].joint = KENT_WELDED;
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     kent_build_derive(&b);
     assert_int_equal(b.model->fitting_count, 1);
     assert_int_equal(fitting(&b, "T")->member_count, 2);
@@ -247,7 +247,7 @@ static void what_cannot_be_held_together_is_refused(void **state)
     kent_build valve = offset_in_plan(2.0, KENT_PUSH_ON);
     kent_build_point(&valve, "F", 200.0, 2.0 * sqrt(0.5), 10.0);
     kent_build_pipe(&valve, "B", "E F", 0.6, 1000.0);
-    valve.model->outflow_count = 0;
+    valve.model->fixed_level_count = 1; /* the valve in place of the tank */
     kent_build_valve(&valve, "V1", "E", 0.1, (double)NAN);
     name_together(&valve, "P", "E");
     assert_refused(&valve, "a valve is held by itself", 800);
@@ -277,7 +277,7 @@ static void without_coordinates_fittings_are_not_added_up(void **state)
         b.model->pipes[i].joint = KENT_FLANGED;
     }
     kent_build_fixed_level(&b, "R", 50.0);
-    kent_build_outflow(&b, "E", 0.1);
+    kent_build_fixed_level(&b, "E", 40.0);
     const int p = kent_build_note(&b, "P"), q = kent_build_note(&b, "Q");
     b.model->notes[p].angle = b.model->notes[q].angle = 0.5;
     kent_build_derive(&b);

@@ -3,6 +3,7 @@
 #include "kent_check.h"
 
 #include <math.h>
+#include <stdio.h>
 #include <string.h>
 
 /* R --- P --- T --- E, with a branch T --- D: the main passes T in mid-route. */
@@ -262,8 +263,84 @@ static void a_given_wave_speed_stays_whatever_gas_there_is(void **state)
     b.model->gas_content = 1e-3;
     kent_build_derive(&b);
     assert_close(b.model->spans[0].wave_speed, b.model->pipes[0].wave_speed, 0.0);
-    assert_int_equal(b.model->cautions.count, 0);
+    for (size_t i = 0; i < b.model->cautions.count; i++) {
+        assert_null(strstr(b.model->cautions.text[i], "gas"));
+    }
     kent_build_clear(&b);
+}
+
+/* A tank at R, demands where lines end: D1 .. D8. */
+static kent_build comb(size_t ends)
+{
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_fixed_level(&b, "R", 60.0);
+    for (size_t i = 1; i <= ends; i++) {
+        char id[8], pipe[8], route[16];
+        (void)snprintf(id, sizeof id, "D%zu", i);
+        (void)snprintf(pipe, sizeof pipe, "P%zu", i);
+        (void)snprintf(route, sizeof route, "R %s", id);
+        kent_build_point(&b, id, 100.0, 10.0 * (double)i, 0.0);
+        kent_build_pipe(&b, pipe, route, 0.3, 1000.0);
+        kent_build_outflow(&b, id, 0.01);
+    }
+    return b;
+}
+
+static const char *caution_of_ends(const kent_build *b)
+{
+    const char *found = NULL;
+    for (size_t i = 0; i < b->model->cautions.count; i++) {
+        const char *text = b->model->cautions.text[i];
+        if (!strstr(text, "the pipe is taken to go on")) continue;
+        assert_null(found); /* one sentence for all */
+        found = text;
+    }
+    return found;
+}
+
+static void an_end_that_draws_makes_no_fitting_and_says_so(void **state)
+{
+    (void)state;
+    kent_build one = comb(1);
+    kent_build_derive(&one);
+    assert_int_equal(one.model->fitting_count, 0);
+    const char *said = caution_of_ends(&one);
+    assert_non_null(said);
+    assert_non_null(strstr(said, "outflow at D1: "));
+    assert_non_null(
+        strstr(said, "fittings = ( { at = \"D1\"; type = \"dead-end\"; } )"));
+    kent_build_clear(&one);
+
+    kent_build many = comb(8);
+    kent_build_derive(&many);
+    said = caution_of_ends(&many);
+    assert_non_null(said);
+    assert_non_null(strstr(said, "outflows at D1, D2, D3, D4, D5, D6 and 2 more: "));
+    kent_build_clear(&many);
+}
+
+static void an_end_that_is_said_or_no_end_is_not_cautioned(void **state)
+{
+    (void)state;
+    kent_build said = comb(1);
+    const int note = kent_build_note(&said, "D1");
+    said.model->notes[note].type = KENT_DEAD_END;
+    kent_build_derive(&said);
+    assert_true(kent_build_fitting_of(&said, "D1") >= 0);
+    assert_null(caution_of_ends(&said));
+    kent_build_clear(&said);
+
+    kent_build midway = kent_build_new();
+    kent_build_point(&midway, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&midway, "M", 100.0, 0.0, 0.0);
+    kent_build_point(&midway, "E", 200.0, 0.0, 0.0);
+    kent_build_pipe(&midway, "A", "R M E", 0.3, 1000.0);
+    kent_build_fixed_level(&midway, "R", 60.0);
+    kent_build_outflow(&midway, "M", 0.01);
+    kent_build_derive(&midway);
+    assert_null(caution_of_ends(&midway));
+    kent_build_clear(&midway);
 }
 
 static void deriving_twice_gives_the_same(void **state)
@@ -295,6 +372,8 @@ int main(void)
         cmocka_unit_test(the_wave_speed_comes_from_the_wall_where_none_is_given),
         cmocka_unit_test(free_gas_slows_waves_by_the_still_pressure_of_each_span),
         cmocka_unit_test(a_given_wave_speed_stays_whatever_gas_there_is),
+        cmocka_unit_test(an_end_that_draws_makes_no_fitting_and_says_so),
+        cmocka_unit_test(an_end_that_is_said_or_no_end_is_not_cautioned),
         cmocka_unit_test(deriving_twice_gives_the_same),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -103,6 +103,38 @@ static void a_size_is_the_class_s_where_the_system_is_its_own(void **state)
     kent_build_clear(&b);
 }
 
+/* An old pipe with the outside of a ductile iron one takes the same castings. */
+static void a_pipe_without_a_class_has_the_size_of_its_like(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "P", 500.0, 0.0, 0.0);
+    kent_build_point(&b, "E", 500.0, 500.0, 0.0);
+    kent_build_point(&b, "F", 900.0, 500.0, 0.0);
+    const int old = kent_build_pipe(&b, "A", "R P E", 0.2065, 1000.0);
+    const int like = kent_build_pipe(&b, "B", "E F", 0.2045, 1000.0);
+    kent_build_fixed_level(&b, "R", 50.0);
+    kent_build_derive(&b);
+    kent_fitting f = b.model->fittings[kent_build_fitting_of(&b, "P")];
+    kent_pipe *pipes = b.model->pipes;
+    (void)snprintf(pipes[like].pipe_class, KENT_ID, "PVC-C900-DR18-8in");
+    pipes[old].outside_diameter = pipes[like].outside_diameter = 9.05 * 0.0254;
+    assert_string_equal(kent_shown_size(b.model, &f, KENT_US).text, "8");
+    assert_string_equal(kent_shown_size(b.model, &f, KENT_SI).text, "206");
+    pipes[old].outside_diameter = 9.3 * 0.0254;
+    assert_string_equal(kent_shown_size(b.model, &f, KENT_US).text, "8.13");
+
+    f.type = KENT_TEE;
+    f.branch = (kent_branch){.end = KENT_BRANCH_BLANK,
+                             .outside_diameter = 9.05 * 0.0254,
+                             .inside_diameter = 0.2};
+    f.branch_size = 0.2;
+    assert_string_equal(kent_shown_fitting(b.model, &f, KENT_US, KENT_ROOMY).text,
+                        "tee, branch 8");
+    kent_build_clear(&b);
+}
+
 /* "crest" and "sag" are two designs: they outlast the word that a crest implies. */
 static void a_bend_says_how_it_turns_in_whatever_room(void **state)
 {
@@ -160,6 +192,7 @@ int main(void)
         cmocka_unit_test(a_number_that_rounds_to_nil_has_no_sign),
         cmocka_unit_test(a_push_shows_the_parts_that_count),
         cmocka_unit_test(a_size_is_the_class_s_where_the_system_is_its_own),
+        cmocka_unit_test(a_pipe_without_a_class_has_the_size_of_its_like),
         cmocka_unit_test(a_bend_says_how_it_turns_in_whatever_room),
         cmocka_unit_test(a_fitting_is_named_by_what_it_serves),
         cmocka_unit_test(an_assumption_reads_as_a_sentence),

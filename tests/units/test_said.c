@@ -33,11 +33,26 @@ static void a_distance_may_be_said_in_whole_units(void **state)
     assert_string_equal(kent_said_whole(KENT_LENGTH, KENT_SI, -0.2).s, "0 m");
 }
 
+static void a_station_is_said_as_it_is_written(void **state)
+{
+    (void)state;
+    const double foot = 0.3048; /* m */
+    assert_string_equal(kent_said_station(KENT_SI, 3700.0).s, "3+700");
+    assert_string_equal(kent_said_station(KENT_SI, 4000.06).s, "4+000.06");
+    assert_string_equal(kent_said_station(KENT_SI, 999.999).s, "1+000");
+    assert_string_equal(kent_said_station(KENT_SI, -12.5).s, "-0+012.5");
+    assert_string_equal(kent_said_station(KENT_SI, -0.001).s, "0+000");
+    assert_string_equal(kent_said_station(KENT_US, 1234.5 * foot).s, "12+34.5");
+    assert_string_equal(kent_said_station(KENT_US, 1305.0 * foot).s, "13+05");
+    assert_string_equal(kent_said_station(KENT_SI, 1e15).s, "1000000000000000.00 m");
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_value_is_said_in_the_units_asked_for),
         cmocka_unit_test(a_distance_may_be_said_in_whole_units),
+        cmocka_unit_test(a_station_is_said_as_it_is_written),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
