@@ -259,8 +259,8 @@ static void a_leg_is_as_weak_as_the_weakest_stop_within_it(void **state)
     }
 }
 
-/* In soil lighter than ground water a pipe of plastic floats: W of 11.4 is below nil, and
- * gives no length at all, least of all a negative one that holds. */
+/* In soil lighter than ground water a pipe of plastic floats: W of 11.4 is below nil,
+ * and gives no length at all, least of all a negative one that holds. */
 static void a_pipe_that_floats_has_no_length(void **state)
 {
     (void)state;
