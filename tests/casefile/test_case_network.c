@@ -117,6 +117,7 @@ static void ratings_of_a_warm_plastic_are_reduced(void **state)
     assert_non_null(note);
     assert_memory_equal(note, "0.9\twater at 30 degC; catalogue (",
                         strlen("0.9\twater at 30 degC; catalogue ("));
+    assert_int_equal(cautions_with(m, "taken to hold"), 0); /* none is the case's */
     kent_model_free(m);
 
     /* What the case rates holds as it stands, and nothing of the class beside it. */
