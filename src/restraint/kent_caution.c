@@ -263,6 +263,24 @@ static void caution_couple(const kent_holding_work *w, kent_holding *h)
                    kent_said_of(KENT_MOMENT, w->m->units, c->largest).s);
 }
 
+/* Obstacles are held against the wedge before a block's face only. A curve, and a bend
+ * with restrained joints, lean on the side of the trench. */
+static void caution_near(const kent_holding_work *w, kent_holding *h)
+{
+    const bool joints = h->held && h->chosen == KENT_RESTRAINED_JOINTS &&
+                        kent_leg_bears(w->fitting, w->pull);
+
+    if (!h->soil_beside && !joints) return;
+    for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
+        const kent_obstacle *o = &w->m->obstacles[w->fitting->obstacle_first + i];
+        kent_notes_add(
+            &h->cautions,
+            "'%s' stands near, and the pipe leans on the side of its trench: "
+            "whether that ground stays is not looked at",
+            o->what);
+    }
+}
+
 void kent_holding_caution(kent_holding_work *w, kent_holding *h)
 {
     caution_couple(w, h);
@@ -281,4 +299,5 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
     caution_block(w, h);
     caution_joints(w, h);
     caution_role(w, h);
+    caution_near(w, h);
 }

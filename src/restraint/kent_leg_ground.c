@@ -10,7 +10,7 @@ static const double PI = 3.14159265358979323846;
 static const double SAME_PLACE = 1e-6;
 
 /* Relative: a length that falling cover makes longer than this no more is found. */
-static const double NEAR_ENOUGH = 1e-12;
+static const double NEAR_ENOUGH = 1e-9;
 
 double kent_port_chainage(const kent_model *m, const kent_port *port)
 {

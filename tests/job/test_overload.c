@@ -264,9 +264,26 @@ static void many_weak_pipes_are_counted(void **state)
     kent_build_clear(&b);
 }
 
+/* Warm plastic loses the same share of every rating (AWWA C900: PVC at 90 degF keeps
+ * 0.75; from memory). */
+static void every_rating_is_lessened_by_the_share_of_a_warm_pipe(void **state)
+{
+    (void)state;
+    const kent_pipe p = {.pressure_rating = 10e5,
+                         .recurring_rating = 12e5,
+                         .surge_rating = 16e5,
+                         .test_rating = 20e5,
+                         .derating = 0.75};
+    assert_close(kent_pipe_rating(&p, KENT_RATING_SERVICE), 7.5e5, 1e-15);
+    assert_close(kent_pipe_rating(&p, KENT_RATING_RECURRING), 9.0e5, 1e-15);
+    assert_close(kent_pipe_rating(&p, KENT_RATING_SURGE), 12.0e5, 1e-15);
+    assert_close(kent_pipe_rating(&p, KENT_RATING_TEST), 15.0e5, 1e-15);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(every_rating_is_lessened_by_the_share_of_a_warm_pipe),
         cmocka_unit_test(still_water_is_held_against_the_rating_in_service),
         cmocka_unit_test(a_warm_plastic_keeps_a_share_of_its_rating),
         cmocka_unit_test(steady_flow_is_held_against_it_in_every_state),

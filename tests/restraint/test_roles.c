@@ -59,7 +59,7 @@ a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius(void **state
     const double pull = 1.5 * 1.0e6 * 0.25 * PI * 0.62 * 0.62;
     const double limit = pull / (150e3 * 0.62); /* m, 4.87 */
     for (int i = 0; i < 3; i++) {
-        const double radius = limit * (i == 0 ? 20.0 : i == 1 ? 1.01 : 0.99);
+        const double radius = limit * (i == 0 ? 20.0 : i == 1 ? 1.001 : 0.999);
         kent_build b = main_that_curves(radius, 0.0);
         kent_restraints *r = kent_hand_size(&b, TEST, 1);
         const kent_holding *h = at_c(&b, r);
@@ -111,6 +111,21 @@ static void the_bearing_beside_a_curve_is_doubted_as_any_other(void **state)
     b.model->soils[0].allowable_bearing = 300e3; /* on 19 kN/m3 x 1.81 m: 8.7 */
     kent_restraints *r = kent_hand_size(&b, TEST, 1);
     kent_hand_expect(at_c(&b, r), "asks for a passive coefficient of 8.7");
+    finish(&b, r);
+}
+
+static void what_stands_near_a_curve_is_told(void **state)
+{
+    (void)state;
+    kent_build b = main_that_curves(100.0, 0.0);
+    b.model->obstacles = kent_alloc(1, sizeof *b.model->obstacles);
+    assert_non_null(b.model->obstacles);
+    b.model->obstacles[0] = (kent_obstacle){
+        .what = "cellar", .distance = 1.0, .depth = 2.0, .direction = {0, -1, 0}};
+    b.model->obstacle_count = 1;
+    b.model->fittings[kent_build_fitting_of(&b, "C")].obstacle_count = 1;
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    kent_hand_expect(at_c(&b, r), "'cellar' stands near");
     finish(&b, r);
 }
 
@@ -340,6 +355,7 @@ static void a_factor_of_the_rules_for_the_test_is_named(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(what_stands_near_a_curve_is_told),
         cmocka_unit_test(
             a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius),
         cmocka_unit_test(a_curve_that_cannot_be_judged_is_not_held),

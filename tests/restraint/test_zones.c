@@ -216,6 +216,8 @@ static kent_build main_with_a_stop(double beyond)
     (void)kent_build_soil(&b, "clay", 90e3, 17e3, 1.5);
     full_soil(&b.model->soils[TILL], 30.0, 0.0);
     full_soil(&b.model->soils[CLAY], 12.0, 2e3);
+    (void)kent_build_soil(&b, "peat", 0.0, 12e3, 1.5);
+    b.model->soils[PEAT].unreliable = true;
     b.model->ground.soil = TILL;
     b.model->ground.water_table = (double)INFINITY;
     b.model->loads.test_pressure = 1.0e6;
@@ -274,6 +276,68 @@ static void a_pipe_that_floats_has_no_length(void **state)
     assert_false(h->held);
     kent_hand_expect(h, "makes no friction on the pipe");
     finish(&b, r);
+}
+
+/* D stands on the edge of peat, 1 m beyond C: what lies before it is till. */
+static void a_stop_on_an_edge_belongs_to_the_ground_beyond(void **state)
+{
+    (void)state;
+    kent_build b = main_with_a_stop(1.0);
+    (void)zoned(&b, 201.0, 205.0, PEAT);
+    kent_restraints *r = sized(&b);
+    assert_close(at_c(&b, r)->legs[1].length,
+                 4.0 + demand() / holds(&b, TILL, 1.5, 0.6), 1e-9);
+    finish(&b, r);
+}
+
+/* In clay without cohesion, lighter than the water that stands in it, the pipe slips.
+ */
+static void a_part_that_holds_nothing_is_passed_through_and_said(void **state)
+{
+    (void)state;
+    kent_build b = main_of_zones();
+    b.model->pipes[0].material_density = 900.0;
+    b.model->soils[CLAY].unit_weight = 9000.0;
+    b.model->soils[CLAY].cohesion = 0.0;
+    zoned(&b, 200.5, 203.5, CLAY)->water_table = 0.0;
+    kent_restraints *r = sized(&b);
+    const kent_holding *h = at_c(&b, r);
+    assert_close(h->legs[1].length, 3.0 + h->legs[0].length, 1e-9);
+    kent_hand_expect(h, "passes through 3.00 m of clay, which holds nothing");
+    finish(&b, r);
+}
+
+/* Where nobody states a cover for the site, that of the fitting goes on. */
+static void a_leg_keeps_the_cover_of_its_fitting_where_no_other_is_known(void **state)
+{
+    (void)state;
+    kent_build b = main_of_zones();
+    b.model->ground.cover = (double)NAN;
+    b.model->points[1].cover = 1.5;
+    kent_restraints *r = sized(&b);
+    assert_close(at_c(&b, r)->restrained_length, demand() / holds(&b, TILL, 1.5, 0.6),
+                 1e-9);
+    finish(&b, r);
+}
+
+/* Half the passive resistance counts at a bend: what stands beside the trench is told.
+ */
+static void what_stands_near_a_restrained_bend_is_told(void **state)
+{
+    (void)state;
+    for (int near = 0; near < 2; near++) {
+        kent_build b = main_of_zones();
+        b.model->obstacles = kent_alloc(1, sizeof *b.model->obstacles);
+        assert_non_null(b.model->obstacles);
+        b.model->obstacles[0] = (kent_obstacle){
+            .what = "sewer", .distance = 1.0, .depth = 2.0, .direction = {0, -1, 0}};
+        b.model->obstacle_count = 1;
+        b.model->notes[0].obstacle_count = (size_t)near;
+        kent_restraints *r = sized(&b);
+        assert_true(at_c(&b, r)->held);
+        assert_true(kent_hand_says(at_c(&b, r), "'sewer' stands near") == (near == 1));
+        finish(&b, r);
+    }
 }
 
 static void peat_on_the_way_is_passed_through_and_said(void **state)
@@ -432,6 +496,10 @@ static void every_line_over_parts_follows_from_those_above(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_stop_on_an_edge_belongs_to_the_ground_beyond),
+        cmocka_unit_test(a_part_that_holds_nothing_is_passed_through_and_said),
+        cmocka_unit_test(a_leg_keeps_the_cover_of_its_fitting_where_no_other_is_known),
+        cmocka_unit_test(what_stands_near_a_restrained_bend_is_told),
         cmocka_unit_test(a_zone_of_the_same_ground_changes_nothing),
         cmocka_unit_test(a_leg_is_added_up_over_what_it_passes),
         cmocka_unit_test(cover_and_water_of_a_zone_count_in_it),
