@@ -60,6 +60,20 @@ void kent_fill_water(kent_filling *f)
     f->model->gas_content = given(&r, there, "gas_content", 0.0);
 }
 
+/* Stations are shown as usual in the units shown, whatever style the case has. */
+static void say_station_style(kent_filling *f)
+{
+    const bool us = f->model->units == KENT_US;
+    const kent_station_style style = f->reader.station_style;
+    if (style == (us ? KENT_100FT_FT : KENT_KM_M)) return;
+    kent_notes_add(&f->model->cautions,
+                   "stations of the case are %s, and are shown as %s",
+                   style == KENT_100M_M ? "100m+m"
+                   : style == KENT_KM_M ? "km+m"
+                                        : "100ft+ft",
+                   us ? "100ft+ft" : "km+m");
+}
+
 void kent_fill_site(kent_filling *f)
 {
     kent_record r;
@@ -70,6 +84,7 @@ void kent_fill_site(kent_filling *f)
     if (there && kent_record_has(&r, "station_style")) {
         const int style = kent_record_field(&r, "station_style")->index;
         if (style >= 0) f->reader.station_style = (kent_station_style)style;
+        say_station_style(f);
     }
     /* Only the vapour limit of a surge knows the weather. */
     const bool pipes =

@@ -390,8 +390,7 @@ static void much_free_gas(const watch *w)
         w->m->gas_content);
 }
 
-/* ---- stations ---------------------------------------------------------------------
- */
+/* ---- stations -------------------------------------------------------------------- */
 
 /* A leg may be counted in plan or in space, along its arc or its tangents; beyond that
  * 1 %, as a length may be off, and 0.1 m, as stations are rounded. */

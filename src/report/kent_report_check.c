@@ -5,6 +5,29 @@
 #include <math.h>
 #include <stdlib.h>
 
+/* ---- the project ----------------------------------------------------------------- */
+
+static void say_project(const kent_view *v)
+{
+    const kent_project *p = &v->model->project;
+    const struct {
+        const char *word, *value;
+    } rows[] = {{"project", p->number},
+                {"drawing", p->drawing},
+                {"revision", p->revision},
+                {"designed by", p->designer},
+                {"checked by", p->checker}};
+    kent_text words = {0};
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        if (rows[i].value[0] == '\0') continue;
+        kent_text_add(&words, "%s%s %s",
+                      words.length > 0 ? ", " : "For the sheets: ", rows[i].word,
+                      rows[i].value);
+    }
+    if (words.length > 0 || words.failed) kent_view_say(v, "", &words);
+    kent_text_clear(&words);
+}
+
 /* ---- the water ------------------------------------------------------------------- */
 
 static void say_head(const kent_view *v)
@@ -18,6 +41,7 @@ static void say_head(const kent_view *v)
         kent_text_add(&words, "%s · checksum %016llx", m->files[0], m->checksum);
         kent_view_say(v, "", &words);
     }
+    say_project(v);
     kent_text_add(&words, "Water");
     if (isfinite(w->temperature)) {
         kent_text_add(

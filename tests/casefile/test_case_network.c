@@ -203,6 +203,30 @@ static void ratings_by_an_unstated_temperature_say_so(void **state)
     kent_catalogue_free(c);
 }
 
+static void a_style_of_stations_that_is_not_shown_is_said(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *head;
+        size_t cautions;
+    } ROWS[] = {
+        {"format = 1; site = { station_style = \"km+m\"; };", 0},
+        {"format = 1; units = \"US\"; site = { station_style = \"km+m\"; };", 1},
+    };
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char *text = replaced(MAIN_CASE, "format = 1;", ROWS[i].head);
+        kent_model *m = read_sound(c, text);
+        assert_int_equal(cautions_with(m,
+                                       "stations of the case are km+m, and are shown "
+                                       "as 100ft+ft"),
+                         ROWS[i].cautions);
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
 static void creep_is_the_case_s_or_the_material_s(void **state)
 {
     (void)state;
@@ -398,6 +422,7 @@ int main(void)
         cmocka_unit_test(creep_is_the_case_s_or_the_material_s),
         cmocka_unit_test(states_hold_their_levels_and_factors),
         cmocka_unit_test(a_scenario_starts_from_the_states_it_names),
+        cmocka_unit_test(a_style_of_stations_that_is_not_shown_is_said),
         cmocka_unit_test(each_fault_gets_its_one_complaint),
         cmocka_unit_test(rules_that_the_catalogue_lacks_are_refused),
         cmocka_unit_test(a_pipe_between_coordinates_has_no_turn_of_its_own),

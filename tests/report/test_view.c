@@ -4,6 +4,7 @@
 #include "kent_view.h"
 
 #include <math.h>
+#include <stdio.h>
 #include <string.h>
 
 static int gather(void *to, const char *piece, size_t length)
@@ -171,6 +172,18 @@ static void a_value_of_the_ground_says_whose_it_is(void **state)
                 "In clay (its point), cover 1.50 m, ground water 0.50 m down (its "
                 "point).");
     assert_says(&b, KENT_SI, "In sand, cover 2.00 m (fittings), ");
+    kent_build_clear(&b);
+}
+
+static void the_sheets_numbers_and_names_are_said(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    kent_build_derive(&b);
+    assert_silent(&b, "For the sheets");
+    (void)snprintf(b.model->project.drawing, sizeof b.model->project.drawing, "C-201");
+    (void)snprintf(b.model->project.checker, sizeof b.model->project.checker, "M. Roe");
+    assert_says(&b, KENT_SI, "For the sheets: drawing C-201, checked by M. Roe\n");
     kent_build_clear(&b);
 }
 
@@ -443,6 +456,7 @@ int main(void)
         cmocka_unit_test(a_branch_without_a_pipe_is_told_with_its_end),
         cmocka_unit_test(fittings_held_as_one_are_told_with_their_members),
         cmocka_unit_test(a_value_of_the_ground_says_whose_it_is),
+        cmocka_unit_test(the_sheets_numbers_and_names_are_said),
         cmocka_unit_test(what_was_not_stated_is_said),
         cmocka_unit_test(a_restraint_says_why),
         cmocka_unit_test(every_route_of_bearing_is_told_with_its_numbers),
