@@ -454,9 +454,8 @@ static void zones_at_two_places(const watch *w)
                 "ground_zone on \"%s\" from %s to %s: stations there are "
                 "counted before \"%s\" and again after it, and the zone holds "
                 "at both places",
-                p->id, kent_said_of(KENT_LENGTH, m->units, z->from).s,
-                kent_said_of(KENT_LENGTH, m->units, z->to).s,
-                m->points[m->route[stop]].id);
+                p->id, kent_said_station(m->units, z->from).s,
+                kent_said_station(m->units, z->to).s, m->points[m->route[stop]].id);
         }
     }
 }
