@@ -219,8 +219,11 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
         kent_text_add(&t, "%s%s", t.length ? ", " : "", KEYS[i].key);
     }
     if (t.length > 0) {
-        kent_notes_add(notes, "no restrained length: soil '%s' lacks %s",
-                       w->lacking->id, kent_text_of(&t));
+        kent_notes_add(notes, "no restrained length: soil '%s' lacks %s%s",
+                       w->lacking->id, kent_text_of(&t),
+                       joints && !h->held ? "; give it in soils, or write restraint = "
+                                            "\"thrust-block\" in fittings"
+                                          : "");
     }
     if (w->lack & KENT_LACK_COVER) {
         kent_notes_add(notes, "no restrained length: the cover is not stated");
@@ -238,8 +241,12 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
                        w->soil->id);
     }
     if (w->lack & KENT_LACK_PIPE) {
-        kent_notes_add(notes, "no restrained length: this fitting stands in no pipe of "
-                              "the case");
+        kent_notes_add(notes, "no restrained length: %s of the case%s",
+                       w->fitting->point < 0 ? "this fitting stands in no pipe"
+                                             : "the branch is no pipe",
+                       joints && !h->held
+                           ? "; write restraint = \"thrust-block\" in fittings"
+                           : "");
     }
     if ((w->lack & KENT_LACK_SOIL) && !w->soil && w->fault == KENT_FAULT_NONE) {
         kent_notes_add(notes, "no restrained length: the soil is not stated");
@@ -339,7 +346,10 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
     } else if (joints && !h->held && soft) {
         refuse_soil(w, &t);
     } else if (joints && !h->held && h->leg_count == 0 && w->lack == 0) {
-        kent_text_add(&t, "no leg of this fitting has joints that could be restrained");
+        kent_text_add(&t,
+                      "no leg of this fitting has joints that could be restrained "
+                      "against this push: write restraint = \"thrust-block\" for it "
+                      "in fittings");
     } else if (!joints) {
         refuse_block(w, h, &t);
     }

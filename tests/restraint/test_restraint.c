@@ -628,7 +628,8 @@ static void missing_soil_values_are_named_and_no_length_is_given(void **state)
     assert_false(h->held);
     assert_int_equal(h->leg_count, 0);
     assert_true(isnan(h->restrained_length) != 0);
-    kent_hand_expect(h, "soil 'till' lacks friction_ratio, passive_ratio");
+    kent_hand_expect(h, "soil 'till' lacks friction_ratio, passive_ratio; give it in "
+                        "soils, or write restraint = \"thrust-block\"");
     finish(&b, r);
 
     b = main_of_five();

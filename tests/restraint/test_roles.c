@@ -204,6 +204,33 @@ static void a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all(void **stat
     }
 }
 
+static void without_a_pipe_a_branch_has_no_joints_to_restrain(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "T", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "E", 200.0, 0.0, 50.0);
+    (void)kent_build_pipe(&b, "P", "A T E", 0.6, 1000.0);
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_fixed_level(&b, "E", 150.0);
+    (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    const int index = kent_build_note(&b, "T");
+    kent_fitting_note *note = &b.model->notes[index];
+    note->restraint = KENT_RESTRAINED_JOINTS;
+    note->branch.end = KENT_BRANCH_BLANK;
+    note->branch.joint = KENT_PUSH_ON; /* so that the end pushes on the tee */
+    note->branch.outside_diameter = 0.17;
+    note->branch.direction = (kent_vec3){0.0, 1.0, 0.0};
+    b.model->loads.test_pressure = 1.0e6;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    assert_false(at_t(&b, r)->held);
+    kent_hand_expect(at_t(&b, r), "the branch is no pipe of the case; write restraint "
+                                  "= \"thrust-block\"");
+    finish(&b, r);
+}
+
 static void a_sleeve_that_no_block_holds_is_offered_no_joints(void **state)
 {
     (void)state;
@@ -362,6 +389,7 @@ int main(void)
         cmocka_unit_test(the_bearing_beside_a_curve_is_doubted_as_any_other),
         cmocka_unit_test(every_line_of_a_curve_follows_from_those_above),
         cmocka_unit_test(a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all),
+        cmocka_unit_test(without_a_pipe_a_branch_has_no_joints_to_restrain),
         cmocka_unit_test(a_sleeve_that_no_block_holds_is_offered_no_joints),
         cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
         cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
