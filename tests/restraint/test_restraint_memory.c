@@ -48,6 +48,66 @@ static void any_allocation_may_fail_and_nothing_leaks(void **state)
     kent_build_clear(&b);
 }
 
+/* The same through zones, past a weak stop, beside a sewer and in wet ground. */
+static void nothing_leaks_of_what_is_said_of_ground_and_obstacles(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 0.3e6}};
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "B", 100.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "S", 100.0, 0.5, 50.0);
+    (void)kent_build_point(&b, "D", 100.0, 200.0, 50.0);
+    const int p = kent_build_pipe(&b, "P", "A B S D", 0.4, 1000.0);
+    b.model->pipes[p].material_density = 7050.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_soil(&b, "till", 100e3, 19e3, 1.2);
+    (void)kent_build_soil(&b, "peat", 0.0, 12e3, 1.2);
+    kent_soil *till = &b.model->soils[0];
+    till->friction_angle = 0.5;
+    till->cohesion = 0.0;
+    till->friction_ratio = till->passive_ratio = 0.6;
+    b.model->soils[1].unreliable = true;
+    b.model->ground.soil = 0;
+    b.model->ground.water_table = 0.0;
+    b.model->points[2].cover = 0.5;
+    b.model->ground_zones = kent_alloc(1, sizeof *b.model->ground_zones);
+    b.model->obstacles = kent_alloc(1, sizeof *b.model->obstacles);
+    assert_non_null(b.model->ground_zones);
+    assert_non_null(b.model->obstacles);
+    b.model->ground_zones[0] = (kent_ground_zone){.from = 101.0,
+                                                  .to = 102.0,
+                                                  .soil = 1,
+                                                  .cover = (double)NAN,
+                                                  .water_table = (double)NAN,
+                                                  .trench = -1};
+    b.model->ground_zone_count = 1;
+    b.model->obstacles[0] = (kent_obstacle){
+        .what = "sewer", .distance = 3.0, .depth = 2.0, .direction = {1.0, 0.0, 0.0}};
+    b.model->obstacle_count = 1;
+    const int turn = kent_build_note(&b, "B");
+    b.model->notes[turn].restraint = KENT_RESTRAINED_JOINTS;
+    b.model->notes[turn].obstacle_count = 1;
+    const int end = kent_build_note(&b, "D");
+    b.model->notes[end].obstacle_count = 1;
+    kent_build_derive(&b);
+    kent_loads_result loads = kent_hand_loads(b.model, cases, 1);
+    job j = {b.model, &loads};
+
+    kent_restraints *r = kent_hand_size(&b, cases, 1);
+    const kent_holding *at_b = &r->fittings[kent_build_fitting_of(&b, "B")];
+    const kent_holding *at_d = &r->fittings[kent_build_fitting_of(&b, "D")];
+    kent_hand_expect(at_b, "passes through 1.00 m of peat");
+    kent_hand_expect(at_b, "the ground at S is the weakest");
+    kent_hand_expect(at_b, "'sewer' stands near");
+    kent_hand_expect(at_d, "'sewer' is clear");
+    kent_hand_expect(at_d, "leans on ground under water");
+    kent_restraints_free(r);
+    assert_true(kent_allocations_needed(size_once, &j) > 20);
+    kent_hand_clear(&loads);
+    kent_build_clear(&b);
+}
+
 static void freeing_nothing_is_safe(void **state)
 {
     (void)state;
@@ -58,6 +118,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(any_allocation_may_fail_and_nothing_leaks),
+        cmocka_unit_test(nothing_leaks_of_what_is_said_of_ground_and_obstacles),
         cmocka_unit_test(freeing_nothing_is_safe),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
