@@ -229,6 +229,28 @@ static void wave_of_another_material(const watch *w)
          "the wave speed given is that of metal, the modulus is not");
 }
 
+/* kg/m3 between plastics (950 to 1450) and metals (7000 to 7900), usual textbook
+ * values.
+ */
+static const double LIGHT = 1700.0, HEAVY = 5000.0;
+
+/* A modulus given in place of the material's makes the wave speed of another. */
+static void modulus_of_another_material(const watch *w)
+{
+    const kent_model *m = w->m;
+    found plastic = {0}, metal = {0};
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        const kent_pipe *p = &m->pipes[i];
+        const bool stiff = p->modulus >= MODULUS_BETWEEN;
+        if (stiff && p->material_density < LIGHT) find(&plastic, p->id, i, p->modulus);
+        if (p->modulus < MODULUS_BETWEEN && p->material_density > HEAVY) {
+            find(&metal, p->id, i, p->modulus);
+        }
+    }
+    tell(w, &plastic, "pipe", "the modulus is that of metal, the material is plastic");
+    tell(w, &metal, "pipe", "the modulus is that of plastic, the material is metal");
+}
+
 /* Relative roughness at which Colebrook-White's chart ends. source Moody (1944) */
 static const double ROUGHEST = 0.05;
 
@@ -521,6 +543,7 @@ static const struct {
     {less_than_asked, true},
     {wave_of_another_wall, true},
     {wave_of_another_material, true},
+    {modulus_of_another_material, true},
     {roughness_in_a_wrong_unit, true},
     {wall_in_a_wrong_unit, true},
     {an_unlikely_hazen_williams, true},
