@@ -71,8 +71,6 @@ static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm
     const bool gasketed =
         pipe->joint == KENT_RESTRAINED || kent_joint_slips(pipe->joint);
     const double outside = pipe->outside_diameter;
-    const bool start = arm.stop == span->route_first;
-    const bool end = arm.stop == span->route_first + span->route_count - 1;
 
     return (kent_port){
         .inside_diameter = pipe->inside_diameter,
@@ -84,7 +82,6 @@ static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm
         .span = number,
         .chainage = m->chainage[arm.stop] - m->chainage[span->route_first],
         .sign = arm.leaves ? 1.0 : -1.0,
-        .at_end = arm.leaves ? start : end,
         .toward = kent_arm_toward(m, arm),
     };
 }

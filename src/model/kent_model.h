@@ -386,7 +386,6 @@ typedef struct kent_port {
     int span;        /* -1: no pipe */
     int toward;      /* the next point along the pipe from here; -1 */
     kent_port_kind kind;
-    bool at_end; /* it is an end of the span, not a place along it */
     /* ports-only */
     double pressure, flow; /* Pa gauge; m3/s out of the fitting */
 } kent_port;

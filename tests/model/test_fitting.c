@@ -182,8 +182,6 @@ static void the_ports_of_a_bend_in_mid_span_watch_one_place(void **state)
     assert_close(out->chainage, 30.0, 1e-14);
     assert_within(in->sign, -1.0, 0.0); /* flow along the span comes in there */
     assert_within(out->sign, 1.0, 0.0);
-    assert_false(in->at_end);
-    assert_false(out->at_end);
     assert_int_equal(in->toward, kent_model_point_index(b.model, "R"));
     assert_int_equal(out->toward, kent_model_point_index(b.model, "E"));
     assert_close(in->direction.x, -1.0, 1e-14);
@@ -243,7 +241,6 @@ static void the_run_of_a_tee_is_its_straight_pair_upstream_first(void **state)
     assert_int_equal(port(&b, "T", 0)->toward, kent_model_point_index(b.model, "R"));
     assert_int_equal(port(&b, "T", 1)->toward, kent_model_point_index(b.model, "E"));
     assert_int_equal(port(&b, "T", 2)->toward, kent_model_point_index(b.model, "D"));
-    assert_true(port(&b, "T", 0)->at_end);
     assert_true(push(&b, "T").y < 0.0); /* away from the branch */
     kent_build_clear(&b);
 }
