@@ -2,6 +2,7 @@
 
 #include "kent_bearing.h"
 #include "kent_said.h"
+#include "kent_site_test.h"
 
 #include <math.h>
 
@@ -355,34 +356,32 @@ static void main_above_its_water(const watch *w)
         kent_said_of(KENT_LENGTH, m->units, lowest).s);
 }
 
-/* m, of still water at a point; NAN: none is known. */
-static double still_level(const kent_model *m, int point)
+/* m, of still water, where it stands highest; NAN: none is known. */
+static double still_level(const kent_model *m)
 {
-    double level = m->loads.static_level;
-    for (size_t i = 0; isnan(m->loads.static_level) && i < m->span_count; i++) {
-        const kent_span *s = &m->spans[i];
-        for (size_t k = 0; k < s->route_count; k++) {
-            if (m->route[s->route_first + k] != point) continue;
-            level = fmax(level, m->highest_level[s->node[k > 0]]);
-        }
+    double level = NAN;
+    for (size_t i = 0; i < m->span_count; i++) {
+        level = fmax(level, kent_static_level(m, m->spans[i].node[0]));
     }
     return level;
 }
 
-/* Test and still water fall alike with height, so that one place tells for all. */
+/* Test and still water fall alike with height, so that one place tells for all; the
+ * highest level tells for mains that are parted. Computed surge asks for more than
+ * still water by its rule, and is not known yet. */
 static void test_below_still_water(const watch *w)
 {
     const kent_model *m = w->m;
-    const kent_loads *l = &m->loads;
-    if (l->test_rule != KENT_TEST_FIXED || l->test_gauge < 0) return;
-    const double z = m->points[l->test_gauge].at.z;
-    const double still = kent_model_pressure(m, still_level(m, l->test_gauge), z);
-    if (!(l->test_pressure < still)) return; /* NaN: no test, or no still water */
+    const int gauge = m->loads.test_gauge;
+    if (gauge < 0 || (m->loads.test_rule != KENT_TEST_FIXED && w->count == 0)) return;
+    const double test = kent_site_test_find(m, w->steadies, NULL).pressure;
+    const double still = kent_model_pressure(m, still_level(m), m->points[gauge].at.z);
+    if (!(test < still)) return; /* NaN: no test, or no still water */
     kent_notes_add(w->cautions,
-                   "the site test, %s at %s, is below the pressure of still water "
-                   "there, %s: a gauge elsewhere, or a wrong unit?",
-                   kent_said_of(KENT_PRESSURE, m->units, l->test_pressure).s,
-                   m->points[l->test_gauge].id,
+                   "the site test, %s at %s, is below the pressure of still water, "
+                   "which brought to that level is %s: a gauge elsewhere, or a wrong "
+                   "unit?",
+                   kent_said_of(KENT_PRESSURE, m->units, test).s, m->points[gauge].id,
                    kent_said_of(KENT_PRESSURE, m->units, still).s);
 }
 

@@ -2,6 +2,7 @@
 
 #include "kent_alarm.h"
 #include "kent_limits.h"
+#include "kent_overload.h"
 #include "kent_scenario_run.h"
 
 #include <assert.h>
@@ -213,7 +214,10 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     if (!status && r->scenario_count > 0) {
         status = march_all(&plan, threads_of(options), err);
     }
-    if (!status) status = kent_recorder_finish(plan.recorder, &r->loads, err);
+    if (!status) {
+        const kent_worst surge = kent_overload_of_marches(r);
+        status = kent_recorder_finish(plan.recorder, &surge, &r->loads, err);
+    }
     if (!status) status = kent_restraint_size(m, r->loads, &r->restraints, err);
     if (!status) kent_limits_judge(r);
     if (!status && (r->cautions.failed || m->cautions.failed || m->assumed.failed)) {

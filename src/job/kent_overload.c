@@ -2,6 +2,8 @@
 
 #include "kent_said.h"
 
+#include <math.h>
+
 enum { NAMED = 6 }; /* places told of one case; the rest are counted */
 
 /* The highest pressure on a span in one case. */
@@ -216,4 +218,38 @@ void kent_overload_judge(kent_results *r)
     if (isnan(test->pressure)) return;
     judge_test(r, test);
     say_unrated(r, KENT_RATING_TEST, "test", "the test pressure there");
+}
+
+/* ---- the whole main -------------------------------------------------------------- */
+
+static int nearest_point(const kent_model *m, const kent_span *span, double x)
+{
+    const size_t first = span->route_first;
+    double least = INFINITY;
+    int nearest = m->route[first];
+    for (size_t k = first; k < first + span->route_count; k++) {
+        const double gap = fabs(m->chainage[k] - m->chainage[first] - x);
+        if (gap >= least) continue;
+        least = gap;
+        nearest = m->route[k];
+    }
+    return nearest;
+}
+
+kent_worst kent_overload_of_marches(const kent_results *r)
+{
+    const kent_model *m = r->model;
+    kent_worst worst = {.pressure = NAN, .level = NAN, .point = -1, .when = ""};
+    for (size_t i = 0; i < r->scenario_count; i++) {
+        const kent_scenario_result *run = &r->scenarios[i];
+        for (size_t s = 0; s < m->span_count; s++) {
+            const reached at = highest_of_march(m, run, s);
+            if (!isfinite(at.pressure) || at.pressure <= worst.pressure) continue;
+            const kent_span *span = &m->spans[s];
+            worst = (kent_worst){at.pressure, kent_span_level(m, span, at.chainage),
+                                 nearest_point(m, span, at.chainage),
+                                 m->scenarios[run->scenario].id};
+        }
+    }
+    return worst;
 }

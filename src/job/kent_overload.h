@@ -9,4 +9,8 @@
  * r->limit_exceeded; says of which pipes no rating is known. */
 void kent_overload_judge(kent_results *r);
 
+/* The highest pressure that a march reaches anywhere on the main; its point is the
+ * nearest one of the route, -1: none was run. */
+kent_worst kent_overload_of_marches(const kent_results *r);
+
 #endif

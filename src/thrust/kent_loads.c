@@ -213,39 +213,19 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
     return 0;
 }
 
-/* The highest pressure of all marches at any fitting; point -1: none was run. */
-static kent_worst worst_of_marches(const kent_recorder *r, bool *partial)
+static kent_site_test test_of(const kent_recorder *r, const kent_worst *surge)
 {
-    const kent_model *m = r->model;
-    kent_worst worst = {.pressure = NAN, .level = NAN, .point = -1, .when = ""};
+    kent_site_test test = kent_site_test_find(r->model, r->steadies, surge);
 
-    for (size_t k = 0; k < m->march_count; k++) {
-        *partial = *partial || !r->slots[k].started;
-        for (size_t i = 0; r->slots[k].started && i < m->fitting_count; i++) {
-            const kent_fitting *f = &m->fittings[i];
-            const double head = r->slots[k].seen[i].highest;
-            const double pressure = kent_model_pressure(m, head, f->at.z);
-            if (!kent_fitting_in_network(f) || !isfinite(pressure)) continue;
-            if (pressure <= worst.pressure) continue; /* NAN: the first */
-            worst = (kent_worst){pressure, f->at.z, f->point,
-                                 m->scenarios[m->marches[k].scenario].id};
-        }
+    for (size_t k = 0; k < r->model->march_count; k++) {
+        const bool missing = !r->slots[k].started;
+        test.partial |= missing && test.rule == KENT_TEST_EN805_CALCULATED;
     }
-    return worst;
-}
-
-static kent_site_test test_of(const kent_recorder *r)
-{
-    bool partial = false;
-    const kent_worst surge = worst_of_marches(r, &partial);
-    kent_site_test test = kent_site_test_find(r->model, r->steadies, &surge);
-
-    test.partial = partial && test.rule == KENT_TEST_EN805_CALCULATED;
     return test;
 }
 
-kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
-                                 kent_error *err)
+kent_status kent_recorder_finish(const kent_recorder *r, const kent_worst *surge,
+                                 kent_loads_result **out, kent_error *err)
 {
     const size_t count = r->model->fitting_count;
     kent_status status = KENT_E_NOMEM;
@@ -258,7 +238,7 @@ kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out
     for (size_t i = 0; i < r->model->march_count; i++) {
         if (r->slots[i].failed) goto done;
     }
-    loads->test = test_of(r);
+    loads->test = test_of(r, surge);
     for (size_t i = 0; i < count; i++) {
         if (loads_of_fitting(r, &loads->test, i, &loads->fittings[i])) goto done;
     }

@@ -83,9 +83,10 @@ void kent_recorder_start(kent_recorder *r, int march, double step);
 void kent_recorder_take(kent_recorder *r, int march, const kent_trace *trace);
 
 /* All load cases of all fittings; *out is the caller's. A march that was never started
- * has no case. */
-kent_status kent_recorder_finish(const kent_recorder *r, kent_loads_result **out,
-                                 kent_error *err);
+ * has no case. surge: the highest pressure of all marches anywhere on the main, point
+ * -1: none was run. */
+kent_status kent_recorder_finish(const kent_recorder *r, const kent_worst *surge,
+                                 kent_loads_result **out, kent_error *err);
 void kent_loads_free(kent_loads_result *l);
 
 /* N: the thrust without the force of the changing flow (8.7), which never governs. */

@@ -421,6 +421,30 @@ static void a_zone_whose_stations_are_counted_twice_is_seen(void **state)
     }
 }
 
+/* By rule it is 1.5 times the 294 kPa at E, 441 kPa; still water in another main, not
+ * joined to this one, stands 60 m over E: 588 kPa. */
+static void a_test_by_rule_below_the_still_water_of_another_main_is_seen(void **state)
+{
+    (void)state;
+    for (int other = 0; other < 2; other++) {
+        kent_build b = quiet_main();
+        kent_build_point(&b, "R2", 0.0, 900.0, 10.0);
+        kent_build_point(&b, "E2", 500.0, 900.0, 10.0);
+        (void)kent_build_pipe(&b, "B", "R2 E2", 0.3, 1000.0);
+        kent_build_fixed_level(&b, "R2", other ? 70.0 : 40.0);
+        kent_build_outflow(&b, "E2", 0.05);
+        b.model->loads.test_gauge = kent_model_point_index(b.model, "E");
+        b.model->loads.test_rule = KENT_TEST_C600;
+        kent_build_derive(&b);
+        if (other) {
+            assert_raised(&b, "the site test, 4.41 bar at E, is below the pressure of");
+        } else {
+            assert_quiet(&b);
+        }
+        kent_build_clear(&b);
+    }
+}
+
 static void more_than_a_hundredth_of_free_gas_is_seen(void **state)
 {
     (void)state;
@@ -520,6 +544,7 @@ int main(void)
         cmocka_unit_test(a_level_of_still_water_below_a_reservoir_is_seen),
         cmocka_unit_test(stations_off_the_ground_are_seen),
         cmocka_unit_test(a_zone_whose_stations_are_counted_twice_is_seen),
+        cmocka_unit_test(a_test_by_rule_below_the_still_water_of_another_main_is_seen),
         cmocka_unit_test(more_than_a_hundredth_of_free_gas_is_seen),
         cmocka_unit_test(a_cover_of_decimetres_or_of_ten_metres_is_seen),
         cmocka_unit_test(a_bearing_beyond_the_ground_s_own_is_seen),

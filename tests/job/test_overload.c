@@ -53,6 +53,32 @@ static const char *caution(const kent_results *r, const char *words)
     return NULL;
 }
 
+/* EN 805:2000, 11.3.2: 100 kPa over the highest pressure, surge included, and that is
+ * at M, 2 m below the ends of a main that turns by too little there to need a fitting.
+ */
+static void the_computed_surge_is_looked_for_along_the_main(void **state)
+{
+    (void)state;
+    kent_build b = sagging_main();
+    const kent_vec3 at[] = {{0.0, 0.0, 24.0}, {500.0, 0.0, 22.0}, {1000.0, 0.0, 24.0}};
+    for (int i = 0; i < 3; i++) {
+        b.model->points[i].at = at[i];
+    }
+    b.model->note_count = 0;
+    b.model->valves[0].capacity = 3e-4; /* a slight surge */
+    b.model->loads.test_rule = KENT_TEST_EN805_CALCULATED;
+    b.model->loads.test_gauge = 1;
+    kent_results *r = run(&b);
+    const kent_peak *peaks = r->scenarios[0].points;
+    const double low = UNIT_WEIGHT * (peaks[1].highest_head - 22.0);
+    assert_int_equal(b.model->fitting_count, 1);
+    assert_true(low > UNIT_WEIGHT * (peaks[2].highest_head - 24.0) + 1e3);
+    assert_close(r->loads->test.pressure, low + 100e3, 1e-9);
+    assert_int_equal(r->loads->test.design.point, 1);
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 /* 40 m of still water over D: 3.92 bar. */
 static void still_water_is_held_against_the_rating_in_service(void **state)
 {
@@ -284,6 +310,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(every_rating_is_lessened_by_the_share_of_a_warm_pipe),
+        cmocka_unit_test(the_computed_surge_is_looked_for_along_the_main),
         cmocka_unit_test(still_water_is_held_against_the_rating_in_service),
         cmocka_unit_test(a_warm_plastic_keeps_a_share_of_its_rating),
         cmocka_unit_test(steady_flow_is_held_against_it_in_every_state),

@@ -34,7 +34,8 @@ void kent_net_finish(kent_net *n)
 
     kent_loads_free(n->loads);
     n->loads = NULL;
-    if (kent_recorder_finish(n->recorder, &n->loads, &err)) fail_msg("%s", err.what);
+    if (kent_recorder_finish(n->recorder, NULL, &n->loads, &err))
+        fail_msg("%s", err.what);
 }
 
 const kent_fitting *kent_net_fitting(const kent_net *n, const char *id)

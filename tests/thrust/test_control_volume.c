@@ -45,7 +45,7 @@ static kent_vec3 thrust_of(const example *e)
     kent_recorder *r = NULL;
     kent_loads_result *loads = NULL;
     assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
-    assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
     assert_string_equal(loads->fittings[0].cases[0].name, "given");
     assert_true(loads->fittings[0].cases[0].given);
     const kent_vec3 thrust =

@@ -32,7 +32,7 @@ static double thrust_at_rest(double angle, double diameter, double pressure)
     kent_recorder *r = NULL;
     kent_loads_result *loads = NULL;
     assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
-    assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
     assert_int_equal(loads->fittings[0].count, 1);
     const kent_instant *worst = &loads->fittings[0].cases[0].worst[KENT_RESULTANT];
     assert_true(worst->set);

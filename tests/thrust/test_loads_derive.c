@@ -235,7 +235,7 @@ static void eight_ports_fit_on_a_line(void **state)
     kent_recorder *r = NULL;
     kent_loads_result *loads = NULL;
     assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
-    assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
 
     kent_load_case c = loads->fittings[0].cases[0];
     for (size_t i = 0; i < LEGS; i++) { /* and changing flow in every leg */
@@ -270,7 +270,7 @@ static void a_bend_by_pocket_calculator(void **state)
     kent_loads_result *loads = NULL;
     char printed[TEXT];
     assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
-    assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
     kent_derivation d = {0};
     kent_loads_derive(b.model, &b.model->fittings[0], &loads->fittings[0].cases[0],
                       KENT_RESULTANT, &d);

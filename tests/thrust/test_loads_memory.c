@@ -24,7 +24,7 @@ static int whole_stage(void *context)
     assert_true(2 * watches <= 24);
     kent_recorder_start(r, 0, 0.1);
     kent_recorder_take(r, 0, &trace);
-    status = kent_recorder_finish(r, &loads, &err);
+    status = kent_recorder_finish(r, NULL, &loads, &err);
     if (status) goto done;
     kent_loads_derive(n->model, &n->model->fittings[0], &loads->fittings[0].cases[0],
                       KENT_RESULTANT, &d);

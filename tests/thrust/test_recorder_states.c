@@ -79,7 +79,7 @@ static void each_march_is_searched_with_its_own_profile(void **state)
     for (int i = 0; i < STATES; i++) {
         take_two(r, i, lower);
     }
-    assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
     size_t seen = 0;
     for (size_t i = 0; i < loads->fittings[bend].count; i++) {
         const kent_load_case *c = &loads->fittings[bend].cases[i];

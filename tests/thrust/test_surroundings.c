@@ -118,7 +118,7 @@ static void the_barometer_moves_no_thrust(void **state)
         kent_recorder *r = NULL;
         kent_loads_result *loads = NULL;
         assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
-        assert_int_equal(kent_recorder_finish(r, &loads, &err), KENT_OK);
+        assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
         thrust[k] = loads->fittings[0].cases[0].worst[KENT_RESULTANT].balance.thrust;
         kent_loads_free(loads);
         kent_recorder_free(r);
