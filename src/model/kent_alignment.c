@@ -260,6 +260,13 @@ static void lay_all(alignment *a)
         if (a->complaints->count > before) return;
         if (a->wanted[i] && !a->done[i]) lay_tree(a, (int)i, tree++);
     }
+    if (tree > 1) {
+        kent_notes_add(
+            &a->m->cautions,
+            "%d mains are laid out from stations and turns, each from 0, 0 along +x: "
+            "how they lie to each other is not known; give x and y where it matters",
+            tree);
+    }
 }
 
 static void complain_unused_turns(const alignment *a)

@@ -67,7 +67,7 @@ static void meet(kent_joining *j, int fitting, size_t port, const kent_way *way)
 
     if (!way->slips && lies_in_plan(m, a) && lies_in_plan(m, b)) {
         kent_joining_unite(j, fitting, way->fitting);
-        kent_joining_inner(j, port, way);
+        kent_joining_inner(j, fitting, port, way);
     } else if (!way->slips) {
         kent_notes_add(
             &m->cautions,
@@ -149,7 +149,7 @@ static void close_between(kent_joining *j, int fitting, bool *apart)
         if (way.fitting == fitting) continue;
         const int root = kent_joining_root(j, fitting);
         if (kent_joining_root(j, way.fitting) != root) continue;
-        kent_joining_inner(j, k, &way);
+        kent_joining_inner(j, fitting, k, &way);
         *apart |= way.slips;
     }
 }
@@ -260,6 +260,24 @@ static bool settle_restraint(const kent_joining *j, int root, kent_fitting *grou
     return true;
 }
 
+/* Whether some member is not joined to the others by pipe within the group. */
+static bool is_parted(const kent_joining *j, int root)
+{
+    for (int f = j->next[root]; f >= 0; f = j->next[f]) {
+        if (kent_joining_link(j, f) != kent_joining_link(j, root)) return true;
+    }
+    return false;
+}
+
+static size_t outlets_of(const kent_port *ports, size_t count)
+{
+    size_t outlets = 0;
+    for (size_t k = 0; k < count; k++) {
+        outlets += ports[k].kind == KENT_PORT_OUTLET;
+    }
+    return outlets;
+}
+
 static bool merge(const kent_joining *j, int root, kent_fitting *out, kent_port *ports,
                   kent_complaints *complaints)
 {
@@ -288,6 +306,15 @@ static bool merge(const kent_joining *j, int root, kent_fitting *out, kent_port 
             out->id, count, number, KENT_ARMS);
         return false;
     }
+    if (outlets_of(ports, count) > 1) {
+        kent_place_complain(
+            m, out->place, complaints,
+            "fitting at \"%s\": two open branches among those held as one with it, and "
+            "what each of them draws would not be known; end one with \"valve\" or "
+            "\"blank\", or write apart = true there",
+            out->id);
+        return false;
+    }
     const kent_port *largest = &ports[kent_ports_largest(ports, count)];
     out->type = KENT_GROUP;
     out->port_count = count;
@@ -296,6 +323,7 @@ static bool merge(const kent_joining *j, int root, kent_fitting *out, kent_port 
     out->outside_diameter = largest->outside_diameter;
     out->branch_size = (double)NAN;
     out->within_deflection = false;
+    out->parted = is_parted(j, root);
     out->orientation = kent_ports_push(ports, count);
     return settle_restraint(j, root, out, complaints);
 }

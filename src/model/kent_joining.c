@@ -10,9 +10,12 @@ kent_status kent_joining_start(kent_joining *j, kent_model *m, const kent_layout
     *j = (kent_joining){.m = m, .l = l};
     j->fitting_at = kent_alloc(m->point_count, sizeof *j->fitting_at);
     j->root = kent_alloc(m->fitting_count, sizeof *j->root);
+    j->linked = kent_alloc(m->fitting_count, sizeof *j->linked);
     j->next = kent_alloc(m->fitting_count, sizeof *j->next);
     j->inner = kent_alloc(m->port_count, sizeof *j->inner);
-    if (!j->fitting_at || !j->root || !j->next || !j->inner) return KENT_E_NOMEM;
+    if (!j->fitting_at || !j->root || !j->linked || !j->next || !j->inner) {
+        return KENT_E_NOMEM;
+    }
     for (size_t p = 0; p < m->point_count; p++) {
         j->fitting_at[p] = -1;
     }
@@ -22,7 +25,7 @@ kent_status kent_joining_start(kent_joining *j, kent_model *m, const kent_layout
         for (size_t k = 0; k < fitting->member_count; k++) {
             j->fitting_at[m->members[fitting->member_first + k]] = (int)f;
         }
-        j->root[f] = (int)f;
+        j->root[f] = j->linked[f] = (int)f;
         j->next[f] = -1;
     }
     return KENT_OK;
@@ -32,6 +35,7 @@ void kent_joining_clear(kent_joining *j)
 {
     free(j->fitting_at);
     free(j->root);
+    free(j->linked);
     free(j->next);
     free(j->inner);
     *j = (kent_joining){0};
@@ -114,24 +118,31 @@ bool kent_joining_way(const kent_joining *j, int fitting, size_t port, double di
 
 /* ---- becoming one ---------------------------------------------------------------- */
 
-int kent_joining_root(const kent_joining *j, int f)
+static int root_in(int *root, int f)
 {
-    while (j->root[f] != f) {
-        j->root[f] = j->root[j->root[f]];
-        f = j->root[f];
+    while (root[f] != f) {
+        root[f] = root[root[f]];
+        f = root[f];
     }
     return f;
 }
 
-void kent_joining_unite(kent_joining *j, int a, int b)
+static void unite_in(int *root, int a, int b)
 {
-    const int x = kent_joining_root(j, a), y = kent_joining_root(j, b);
-    j->root[x < y ? y : x] = x < y ? x : y;
+    const int x = root_in(root, a), y = root_in(root, b);
+    root[x < y ? y : x] = x < y ? x : y;
 }
 
-void kent_joining_inner(kent_joining *j, size_t port, const kent_way *way)
+int kent_joining_root(const kent_joining *j, int f) { return root_in(j->root, f); }
+
+void kent_joining_unite(kent_joining *j, int a, int b) { unite_in(j->root, a, b); }
+
+int kent_joining_link(const kent_joining *j, int f) { return root_in(j->linked, f); }
+
+void kent_joining_inner(kent_joining *j, int f, size_t port, const kent_way *way)
 {
     j->inner[port] = j->inner[way->port] = true;
+    unite_in(j->linked, f, way->fitting);
 }
 
 /* Members strung together in the order of the list; returns how many joined another. */

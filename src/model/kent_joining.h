@@ -16,6 +16,7 @@ typedef struct kent_joining {
     const kent_layout *l;
     int *fitting_at; /* [point_count] -1: none there */
     int *root;   /* [fitting_count] the first of those that it is one with; itself */
+    int *linked; /* [fitting_count] the same by legs between members alone */
     int *next;   /* [fitting_count] the next member after it; -1 */
     bool *inner; /* [port_count] leads to another member */
 } kent_joining;
@@ -39,9 +40,12 @@ bool kent_joining_way(const kent_joining *j, int fitting, size_t port, double di
 
 /* The first of those that a fitting is one with. */
 int kent_joining_root(const kent_joining *j, int f);
-/* Two become one, with all that they are one with already; the leg between is inner. */
+/* Two become one, with all that they are one with already; the leg from f between them
+ * is inner. */
 void kent_joining_unite(kent_joining *j, int a, int b);
-void kent_joining_inner(kent_joining *j, size_t port, const kent_way *way);
+void kent_joining_inner(kent_joining *j, int f, size_t port, const kent_way *way);
+/* The same for two members that pipe joins within the group. */
+int kent_joining_link(const kent_joining *j, int f);
 
 /* Replaces the first member of each by what merge makes of them and drops the others.
  * merge: the members are root, next[root] ...; it writes *out (members and ports apart)

@@ -467,6 +467,8 @@ typedef struct kent_fitting {
     double curve_length; /* m along a curve; NAN */
     size_t member_first, member_count; /* of a group, or of a curve of several joints,
                                           into kent_model.members */
+    bool parted; /* a group of which some member is not joined to the others by pipe
+                    between them alone, and may be under pressure without them */
     size_t obstacle_first, obstacle_count; /* into kent_model.obstacles */
     int zone;   /* of kent_model.ground_zones, that it lies in; -1 */
     int trench; /* -1: not stated */

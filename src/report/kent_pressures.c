@@ -25,6 +25,7 @@ static double least_rating(const kent_model *m, const kent_fitting *fitting,
 static kent_pressure column_of(const kent_load_case *c)
 {
     if (c->given) return KENT_PRESSURE_GIVEN;
+    if (c->later) return KENT_PRESSURE_FUTURE;
     switch (c->kind) {
     case KENT_CASE_TEST:
         return KENT_PRESSURE_TEST;
@@ -71,6 +72,7 @@ kent_pressures kent_pressures_of(const kent_results *r, size_t fitting)
     } NAMED[] = {{"steady", KENT_PRESSURE_STEADY},
                  {"static", KENT_PRESSURE_STATIC},
                  {"test", KENT_PRESSURE_TEST},
+                 {"future", KENT_PRESSURE_FUTURE},
                  {"given", KENT_PRESSURE_GIVEN}};
     const kent_fitting *f = &r->model->fittings[fitting];
     const kent_fitting_loads *loads = &r->loads->fittings[fitting];

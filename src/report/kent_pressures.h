@@ -11,6 +11,7 @@ typedef enum kent_pressure {
     KENT_PRESSURE_STEADY,
     KENT_PRESSURE_STATIC,
     KENT_PRESSURE_TEST,
+    KENT_PRESSURE_FUTURE, /* where the case expects one */
     KENT_PRESSURE_HIGHEST,
     KENT_PRESSURE_LOWEST,
     KENT_PRESSURE_GIVEN,

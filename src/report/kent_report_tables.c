@@ -370,11 +370,17 @@ static bool has_ratings(const kent_page *page, kent_rating rating)
     return false;
 }
 
+static bool has_future(const kent_page *page)
+{
+    return !isnan(page->model->loads.future_pressure);
+}
+
 static void pressure_row(const kent_page *page, size_t i, kent_table *t)
 {
     const kent_pressures p = kent_pressures_of(page->results, i);
     kent_table_cell(t, "%s", page->model->fittings[i].id);
     for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
+        if (k == KENT_PRESSURE_FUTURE && !has_future(page)) continue;
         const kent_shown number =
             kent_shown_quantity(KENT_PRESSURE, page->units, p.at[k]);
         kent_table_cell(t, "%s%s", number.text, k == p.governs ? "*" : " ");
@@ -391,25 +397,24 @@ static void print_pressures(kent_page *page)
 {
     const kent_shown unit = kent_shown_unit(KENT_PRESSURE, page->units);
     const char *bar = unit.text;
-    enum { BEFORE = 7 }; /* ratings that any pipe may lack come last */
-    kent_column columns[] = {
-        {"point", "", KENT_ALIGN_LEFT, true},
-        {"steady ", bar, KENT_ALIGN_RIGHT, false},
-        {"static ", bar, KENT_ALIGN_RIGHT, false},
-        {"test ", bar, KENT_ALIGN_RIGHT, false},
-        {"highest ", bar, KENT_ALIGN_RIGHT, false},
-        {"lowest ", bar, KENT_ALIGN_RIGHT, false},
-        {"rating ", bar, KENT_ALIGN_RIGHT, false},
-        {"", bar, KENT_ALIGN_RIGHT, false},
-        {"", bar, KENT_ALIGN_RIGHT, false},
-        {"", bar, KENT_ALIGN_RIGHT, false},
-    };
-    static const char *const HEADS[KENT_RATINGS] = {"rating ", "+surge ", "+often ",
+    static const char *const HEADS[] = {"steady ", "static ",  "test ",
+                                        "future ", "highest ", "lowest "};
+    static const char *const RATED[KENT_RATINGS] = {"rating ", "+surge ", "+often ",
                                                     "tested "};
-    kent_table t = {.columns = columns, .column_count = BEFORE};
+    enum { MOST = 1 + sizeof HEADS / sizeof HEADS[0] + KENT_RATINGS };
+    kent_column columns[MOST] = {{"point", "", KENT_ALIGN_LEFT, true}};
+    kent_table t = {.columns = columns, .column_count = 1};
+    for (size_t k = 1; k < MOST; k++) {
+        columns[k] = (kent_column){"", bar, KENT_ALIGN_RIGHT, false};
+    }
+    for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
+        if (k == KENT_PRESSURE_FUTURE && !has_future(page)) continue;
+        columns[t.column_count++].head = HEADS[k];
+    }
+    columns[t.column_count++].head = RATED[KENT_RATING_SERVICE];
     for (int k = KENT_RATING_SURGE; k < KENT_RATINGS; k++) {
         if (!has_ratings(page, (kent_rating)k)) continue;
-        columns[t.column_count++].head = HEADS[k];
+        columns[t.column_count++].head = RATED[k];
     }
     for (size_t i = 0; i < page->model->fitting_count; i++) {
         const size_t f = page->order[i];

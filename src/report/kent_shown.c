@@ -341,7 +341,7 @@ static kent_shown refusal(const kent_model *m, const kent_fitting *fitting,
                           const kent_holding *holding, kent_room room)
 {
     enum { SHORT = 12 };
-    if (holding->turns_over) return shown("none: a couple");
+    if (holding->unbalanced) return shown("none as a group");
     if (fitting->soil < 0) return shown("none: no soil");
     const kent_soil *soil = &m->soils[fitting->soil];
     if (soil->unreliable) {

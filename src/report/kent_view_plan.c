@@ -570,8 +570,10 @@ void kent_view_points(const kent_view *v)
         }
     }
     kent_table t = {.columns = columns, .column_count = count};
+    bool laid = false;
     for (size_t i = 0; i < m->point_count; i++) {
         const kent_point *p = &m->points[i];
+        laid |= p->laid_out;
         kent_view_word(&t, p->id);
         kent_view_quantity(v, &t, KENT_LENGTH, p->at.x);
         kent_view_quantity(v, &t, KENT_LENGTH, p->at.y);
@@ -582,7 +584,10 @@ void kent_view_points(const kent_view *v)
             kent_view_quantity(v, &t, KENT_LENGTH, head[s * m->point_count + i]);
         }
     }
-    kent_view_finish(v, "Points, as given", &t);
+    kent_view_finish(v,
+                     laid ? "Points, x and y worked out from stations and turns"
+                          : "Points, as given",
+                     &t);
 done:
     free(head);
     free(columns);

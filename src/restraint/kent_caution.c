@@ -248,13 +248,22 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
     }
 }
 
+static void caution_parted(const kent_holding_work *w, kent_holding *h)
+{
+    if (!w->fitting->parted || h->unbalanced) return;
+    kent_notes_add(
+        &h->cautions,
+        "no pipe joins all of these fittings: each may be under pressure without the "
+        "others, and then pushes another way than the block is sized for");
+}
+
 /* Pushes whose sum is held may still turn a group a little: no block here is sized for
  * that (8.15). */
 static void caution_couple(const kent_holding_work *w, kent_holding *h)
 {
     const kent_couple *c = &w->couple;
 
-    if (w->fitting->type != KENT_GROUP || h->turns_over) return;
+    if (w->fitting->type != KENT_GROUP || h->unbalanced) return;
     if (c->largest <= KENT_HOLDING_LEAST * w->fitting->outside_diameter) return;
     kent_notes_add(&h->cautions,
                    "the pushes of these fittings leave a couple of %s before any "
@@ -284,6 +293,7 @@ static void caution_near(const kent_holding_work *w, kent_holding *h)
 void kent_holding_caution(kent_holding_work *w, kent_holding *h)
 {
     caution_couple(w, h);
+    caution_parted(w, h);
     if (w->fitting->within_deflection) {
         kent_notes_add(&h->cautions,
                        "a turn of %s is within what the joint takes: listed, not held",
@@ -294,7 +304,7 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
                        kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s);
     }
     caution_test_pressure(w, h);
-    if (h->needs_nothing || h->turns_over) return;
+    if (h->needs_nothing || h->unbalanced) return;
     caution_peak(w, h);
     caution_block(w, h);
     caution_joints(w, h);

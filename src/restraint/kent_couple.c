@@ -46,3 +46,38 @@ kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,
     }
     return out;
 }
+
+/* N: of the member at one port's point, by all ports there. */
+static double member_thrust(const kent_model *m, const kent_fitting *group,
+                            const kent_instant *at, size_t port)
+{
+    const kent_port *ports = &m->ports[group->port_first];
+    const int point = kent_port_point(m, group, &ports[port]);
+    kent_vec3 sum = {0.0, 0.0, 0.0};
+
+    for (size_t k = 0; k < group->port_count; k++) {
+        if (kent_port_point(m, group, &ports[k]) != point) continue;
+        const double push = at->balance.port[k].push;
+        sum = kent_vec3_sub(sum, kent_vec3_scale(push, ports[k].direction));
+    }
+    return kent_vec3_length(sum);
+}
+
+double kent_couple_alone(const kent_model *m, const kent_fitting *group,
+                         const kent_fitting_loads *loads)
+{
+    double most = 0.0;
+
+    if (group->type != KENT_GROUP || !group->parted) return most;
+    for (size_t i = 0; i < loads->count; i++) {
+        const kent_load_case *c = &loads->cases[i];
+        const kent_instant *at[] = {&c->worst[KENT_RESULTANT], &c->highest};
+        for (size_t k = 0; k < sizeof at / sizeof at[0]; k++) {
+            for (size_t p = 0; at[k]->set && p < group->port_count; p++) {
+                const double thrust = member_thrust(m, group, at[k], p);
+                most = fmax(most, c->safety_factor * thrust);
+            }
+        }
+    }
+    return most;
+}

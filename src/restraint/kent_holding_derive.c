@@ -97,7 +97,7 @@ static void derive_peak(const kent_holding_work *w, kent_holding *h)
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h)
 {
     kent_derivation *d = &h->derivation;
-    const bool turns = h->turns_over && w->loads->count > 0;
+    const bool turns = h->unbalanced && w->loads->count > 0;
 
     if (h->governing < 0 && turns) {
         kent_loads_derive(w->m, w->fitting, &w->loads->cases[w->couple.governing],
@@ -111,7 +111,7 @@ void kent_holding_derive(const kent_holding_work *w, kent_holding *h)
     kent_loads_derive(w->m, w->fitting, &w->loads->cases[h->governing], h->sense, d);
     derive_peak(w, h);
     derive_load(w, h, h->sense); /* first of all what governs */
-    if (h->needs_nothing || h->turns_over) return;
+    if (h->needs_nothing || h->unbalanced) return;
     for (kent_sense s = KENT_SIDEWAYS; s < KENT_SENSES; s++) {
         const bool counts = h->block.type != KENT_BLOCK_NONE && w->demand.load[s] > 0.0;
         if (counts && s != h->sense) derive_load(w, h, s);

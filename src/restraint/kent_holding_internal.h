@@ -34,6 +34,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     double pull_factor;
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
     kent_couple couple;            /* nil but of a group */
+    double alone;                  /* N, see kent_couple_alone */
     double side_load;              /* N/m, factored, of a curve; NAN */
     double reach;                  /* m, of that wedge at the ground's surface */
     kent_notes clear;              /* obstacles outside it; owned */
@@ -49,6 +50,10 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h); /* what governs *
  * source docs/theory/10-blocks.md, 10.30 */
 kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,
                              const kent_fitting_loads *loads);
+/* N, factored: the largest thrust of one member by itself, of a group that is parted;
+ * else 0. source docs/theory/10-blocks.md, 10.31 */
+double kent_couple_alone(const kent_model *m, const kent_fitting *group,
+                         const kent_fitting_loads *loads);
 void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
 void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */

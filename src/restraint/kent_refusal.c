@@ -319,6 +319,17 @@ static void refuse_couple(const kent_holding_work *w, kent_notes *notes)
 {
     const double couple = w->couple.largest;
 
+    if (!w->couple.apart) {
+        kent_notes_add(
+            notes,
+            "no pipe joins all of these fittings, so that one may be under pressure "
+            "without the others, and alone one pushes with %s factored, more than all "
+            "together: no one block is sized for that. Leave together_with out, so "
+            "that "
+            "each is held by itself",
+            kent_said_of(KENT_FORCE, w->m->units, w->alone).s);
+        return;
+    }
     kent_notes_add(
         notes,
         "the pushes of these fittings leave a couple of %s before any factor, and no "
@@ -330,7 +341,7 @@ static void refuse_couple(const kent_holding_work *w, kent_notes *notes)
 
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
 {
-    if (h->turns_over) {
+    if (h->unbalanced) {
         refuse_couple(w, &h->cautions);
         return;
     }

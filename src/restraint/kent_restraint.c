@@ -5,6 +5,7 @@
 #include <stdlib.h>
 
 static const double PI = 3.14159265358979323846;
+static const double SAME = 1.0 + 1e-9; /* forces that differ by less are one */
 
 static kent_site site_of(const kent_fitting *f, const kent_soil *soil,
                          const kent_rules *rules)
@@ -60,8 +61,9 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
 {
     kent_holding_find(w, h);
     w->couple = kent_couple_find(w->m, w->fitting, w->loads);
-    h->turns_over = w->couple.apart;
-    if (h->turns_over) {
+    w->alone = kent_couple_alone(w->m, w->fitting, w->loads);
+    h->unbalanced = w->couple.apart || w->alone > SAME * w->factored[KENT_RESULTANT];
+    if (h->unbalanced) {
         h->needs_nothing = false;
         kent_holding_refuse(w, h);
     } else if (!h->needs_nothing) {

@@ -110,7 +110,8 @@ typedef struct kent_holding {
     bool held;          /* false: nothing here can hold it, or nothing was asked */
     bool soil_beside;   /* a curve, left to the soil beside it, all along */
     bool needs_nothing; /* within joint deflection, or no thrust */
-    bool turns_over; /* a group whose pushes leave a couple that nothing here holds */
+    bool unbalanced; /* a group that no one block holds: its pushes leave a couple, or
+                        one main of several pushes more alone */
     double design_thrust; /* N, factored, of the governing case and sense */
     double factor_asked, factor_reached, utilisation; /* NAN where not held */
     kent_block block;

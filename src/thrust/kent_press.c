@@ -42,12 +42,16 @@ double kent_press_of_test(const kent_model *m, const kent_site_test *test,
     return from_gauge(m, f, test->pressure, test->gauge);
 }
 
+/* Fittings held as one may stand on several mains: the highest counts. */
 double kent_press_static(const kent_model *m, const kent_fitting *f)
 {
-    const kent_port *ports = &m->ports[f->port_first];
-    const kent_port *port = &ports[kent_port_widest(ports, f->port_count)];
-    const double level = kent_static_level(m, m->spans[port->span].node[0]);
+    double level = NAN;
 
+    for (size_t k = f->port_first; k < f->port_first + f->port_count; k++) {
+        const kent_port *port = &m->ports[k];
+        if (port->kind != KENT_PORT_SPAN) continue;
+        level = fmax(level, kent_static_level(m, m->spans[port->span].node[0]));
+    }
     return kent_model_pressure(m, level, f->at.z);
 }
 

@@ -224,6 +224,32 @@ static void a_ring_must_close(void **state)
     kent_build_clear(&askew);
 }
 
+static void mains_laid_out_apart_are_said_to_share_their_start(void **state)
+{
+    (void)state;
+    for (int mains = 1; mains <= 2; mains++) {
+        kent_build b = kent_build_new();
+        add(&b, "A", 0.0, NAN, 10.0);
+        add(&b, "B", 100.0, 0.5, 10.0);
+        add(&b, "C", 200.0, NAN, 10.0);
+        kent_build_pipe(&b, "P", "A B C", 0.3, 1000.0);
+        kent_build_fixed_level(&b, "A", 50.0);
+        if (mains == 2) {
+            add(&b, "F", 0.0, NAN, 10.0);
+            add(&b, "G", 100.0, 0.5, 10.0);
+            add(&b, "H", 200.0, NAN, 10.0);
+            kent_build_pipe(&b, "Q", "F G H", 0.3, 1000.0);
+            kent_build_fixed_level(&b, "F", 50.0);
+        }
+        kent_build_derive(&b);
+        assert_int_equal(b.model->cautions.count, mains - 1);
+        if (mains == 2) {
+            assert_non_null(strstr(b.model->cautions.text[0], "2 mains are laid out"));
+        }
+        kent_build_clear(&b);
+    }
+}
+
 static void what_cannot_be_laid_out_is_refused(void **state)
 {
     (void)state;
@@ -274,6 +300,7 @@ int main(void)
         cmocka_unit_test(a_branch_turns_off_the_pipe_that_runs_there),
         cmocka_unit_test(a_branch_of_unknown_turn_is_said_or_refused),
         cmocka_unit_test(a_ring_must_close),
+        cmocka_unit_test(mains_laid_out_apart_are_said_to_share_their_start),
         cmocka_unit_test(what_cannot_be_laid_out_is_refused),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -237,6 +237,32 @@ static void a_group_takes_the_least_cover_of_its_members(void **state)
     kent_build_clear(&b);
 }
 
+static void put_open_branch(kent_build *b, const char *at)
+{
+    const int note = kent_build_note(b, at);
+    b->model->notes[note].branch = (kent_branch){.end = KENT_BRANCH_OPEN,
+                                                 .direction = {0.0, 0.0, 1.0},
+                                                 .outside_diameter = 0.1,
+                                                 .inside_diameter = 0.09,
+                                                 .joint = KENT_FLANGED};
+    kent_build_outflow(b, at, 0.01);
+}
+
+static void two_open_ends_in_one_are_refused(void **state)
+{
+    (void)state;
+    kent_build one = offset_in_plan(2.0, KENT_RESTRAINED);
+    put_open_branch(&one, "P");
+    kent_build_derive(&one);
+    assert_int_equal(fitting(&one, "P")->member_count, 2);
+    kent_build_clear(&one);
+
+    kent_build two = offset_in_plan(2.0, KENT_RESTRAINED);
+    put_open_branch(&two, "P");
+    put_open_branch(&two, "Q");
+    assert_refused(&two, "two open branches among those held as one", 800);
+}
+
 static void what_cannot_be_held_together_is_refused(void **state)
 {
     (void)state;
@@ -298,6 +324,7 @@ int main(void)
         cmocka_unit_test(a_vertical_offset_is_one_and_pushes_nowhere),
         cmocka_unit_test(a_group_may_end_within_itself),
         cmocka_unit_test(a_group_takes_the_least_cover_of_its_members),
+        cmocka_unit_test(two_open_ends_in_one_are_refused),
         cmocka_unit_test(what_cannot_be_held_together_is_refused),
         cmocka_unit_test(without_coordinates_fittings_are_not_added_up),
     };

@@ -3,6 +3,7 @@
 #include "kent_pressures.h"
 
 #include <math.h>
+#include <stdio.h>
 
 static void the_highest_is_that_of_the_scenario_named(void **state)
 {
@@ -68,6 +69,28 @@ static void ratings_with_surge_are_the_least_of_the_pipes_that_meet(void **state
     kent_mixed_clear(&mixed);
 }
 
+/* It has the factor of still water, but a column of its own. */
+static void a_later_pressure_has_its_own_column(void **state)
+{
+    (void)state;
+    kent_mixed mixed = kent_mixed_new(false);
+    const size_t crest = (size_t)kent_build_fitting_of(&mixed.build, "CR");
+    const int governs = mixed.results->restraints->fittings[crest].governing;
+    kent_load_case *c = &mixed.results->loads->fittings[crest].cases[governs];
+    assert_true(
+        isnan(kent_pressures_of(mixed.results, crest).at[KENT_PRESSURE_FUTURE]));
+    (void)snprintf(c->name, sizeof c->name, "future");
+    c->later = true;
+    c->kind = KENT_CASE_STATIC;
+    c->scenario = -1;
+    c->worst[KENT_RESULTANT].set = true;
+    c->worst[KENT_RESULTANT].pressure = 12e5;
+    const kent_pressures p = kent_pressures_of(mixed.results, crest);
+    assert_int_equal(p.governs, KENT_PRESSURE_FUTURE);
+    assert_close(p.at[KENT_PRESSURE_FUTURE], 12e5, 0.0);
+    kent_mixed_clear(&mixed);
+}
+
 static void a_fitting_with_ports_of_its_own_has_only_what_was_given(void **state)
 {
     (void)state;
@@ -108,6 +131,7 @@ int main(void)
         cmocka_unit_test(the_highest_is_that_of_the_scenario_named),
         cmocka_unit_test(test_pressure_is_carried_by_elevation),
         cmocka_unit_test(ratings_with_surge_are_the_least_of_the_pipes_that_meet),
+        cmocka_unit_test(a_later_pressure_has_its_own_column),
         cmocka_unit_test(a_fitting_with_ports_of_its_own_has_only_what_was_given),
         cmocka_unit_test(the_extremes_of_the_main_bound_every_point),
     };

@@ -316,7 +316,7 @@ static void an_offset_is_not_held_by_one_block(void **state)
     const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
 
     assert_false(h->needs_nothing || h->held);
-    assert_true(h->turns_over);
+    assert_true(h->unbalanced);
     assert_int_equal(r->not_held, 1);
     kent_hand_expect(h, "leave a couple of 40.3 kN m before any factor");
     kent_hand_expect(h, "Write apart = true");
@@ -342,8 +342,51 @@ static void a_force_that_runs_past_a_group_is_not_held(void **state)
         kent_restraints *r = kent_hand_size(&b, TEST, 1);
         const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
         assert_true(h->held == rows[i].held);
-        assert_true(h->turns_over == !rows[i].held);
+        assert_true(h->unbalanced == !rows[i].held);
         assert_int_equal(r->not_held, rows[i].held ? 0 : 1);
+        finish(&b, r);
+    }
+}
+
+/* Two mains side by side, joined by nothing, that turn at B and Q by 90 degrees, the
+ * second one the same way or the other: 53.7 kN each, and together twice that or,
+ * pushed against each other, nothing; one may be drained. */
+static void mains_pressed_one_at_a_time_are_not_held_against_each_other(void **state)
+{
+    (void)state;
+    for (int against = 0; against < 2; against++) {
+        const double way = against ? -1.0 : 1.0;
+        kent_build b = kent_build_new();
+        (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "B", 0.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "C", 0.0, 200.0, 50.0);
+        (void)kent_build_point(&b, "P", 0.5 - way * 200.0, -0.5, 50.0);
+        (void)kent_build_point(&b, "Q", 0.5, -0.5, 50.0);
+        (void)kent_build_point(&b, "E", 0.5, -0.5 + way * 200.0, 50.0);
+        (void)kent_build_pipe(&b, "M", "A B C", 0.2, 1000.0);
+        (void)kent_build_pipe(&b, "N", "P Q E", 0.2, 1000.0);
+        (void)kent_build_fixed_level(&b, "A", 60.0);
+        (void)kent_build_fixed_level(&b, "P", 80.0); /* and the higher one counts */
+        (void)kent_build_outflow(&b, "C", 0.0);
+        (void)kent_build_outflow(&b, "E", 0.0);
+        (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+        b.model->ground.water_table = (double)INFINITY;
+        const int note = kent_build_note(&b, "B");
+        b.model->together = kent_alloc(1, sizeof *b.model->together);
+        assert_non_null(b.model->together);
+        b.model->together[0] = 4;
+        b.model->together_count = b.model->notes[note].together_count = 1;
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        const kent_fitting *f = &b.model->fittings[kent_build_fitting_of(&b, "B")];
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_true(f->parted);
+        assert_true(h->unbalanced == (against > 0) && h->held == (against == 0));
+        if (against) {
+            kent_hand_expect(h, "alone one pushes with 80.6 kN factored");
+        } else {
+            kent_hand_expect(h, "each may be under pressure without the others");
+        }
         finish(&b, r);
     }
 }
@@ -394,6 +437,7 @@ int main(void)
         cmocka_unit_test(beside_a_hydrant_the_drain_stays_free),
         cmocka_unit_test(two_bends_as_one_get_one_block_for_the_sum),
         cmocka_unit_test(an_offset_is_not_held_by_one_block),
+        cmocka_unit_test(mains_pressed_one_at_a_time_are_not_held_against_each_other),
         cmocka_unit_test(a_force_that_runs_past_a_group_is_not_held),
         cmocka_unit_test(a_factor_of_the_rules_for_the_test_is_named),
     };
