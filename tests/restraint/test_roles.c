@@ -366,7 +366,7 @@ static void mains_pressed_one_at_a_time_are_not_held_against_each_other(void **s
         (void)kent_build_pipe(&b, "M", "A B C", 0.2, 1000.0);
         (void)kent_build_pipe(&b, "N", "P Q E", 0.2, 1000.0);
         (void)kent_build_fixed_level(&b, "A", 60.0);
-        (void)kent_build_fixed_level(&b, "P", 80.0); /* and the higher one counts */
+        (void)kent_build_fixed_level(&b, "P", 80.0);
         (void)kent_build_outflow(&b, "C", 0.0);
         (void)kent_build_outflow(&b, "E", 0.0);
         (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);

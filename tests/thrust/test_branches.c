@@ -433,6 +433,39 @@ static double value_of(const kent_derivation *d, const char *symbol)
 }
 
 /* An offset of 1.2 m at 45 degrees: no thrust, but p A x 0.8485 m in plan. */
+/* Two mains side by side, still water at 60 m and at 80 m: both bends are taken under
+ * the 30 m of water over 50 m that the higher one brings, whichever is named first. */
+static void still_water_of_the_higher_main_counts_for_both(void **state)
+{
+    (void)state;
+    for (int first = 0; first < 2; first++) {
+        kent_build b = kent_build_new();
+        (void)kent_build_point(&b, "A", -200.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "B", 0.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "C", 0.0, 200.0, 50.0);
+        (void)kent_build_point(&b, "P", -200.0, -0.5, 50.0);
+        (void)kent_build_point(&b, "Q", 0.5, -0.5, 50.0);
+        (void)kent_build_point(&b, "E", 0.5, 200.0, 50.0);
+        (void)kent_build_pipe(&b, "M", "A B C", 0.2, 1000.0);
+        (void)kent_build_pipe(&b, "N", "P Q E", 0.2, 1000.0);
+        kent_build_fixed_level(&b, "A", first ? 80.0 : 60.0);
+        kent_build_fixed_level(&b, "P", first ? 60.0 : 80.0);
+        (void)kent_build_outflow(&b, "C", 0.0);
+        (void)kent_build_outflow(&b, "E", 0.0);
+        const int note = kent_build_note(&b, "B");
+        b.model->together = kent_alloc(1, sizeof *b.model->together);
+        assert_non_null(b.model->together);
+        b.model->together[0] = 4;
+        b.model->together_count = b.model->notes[note].together_count = 1;
+        kent_net n = kent_net_of(b);
+        kent_net_finish(&n);
+        const kent_load_case *c = kent_net_case(&n, "B", "static");
+        const double weight = n.model->water.density * n.model->gravity;
+        assert_close(c->worst[KENT_RESULTANT].pressure, weight * 30.0, 1e-12);
+        kent_net_clear(&n);
+    }
+}
+
 static void a_level_offset_leaves_its_couple(void **state)
 {
     (void)state;
@@ -681,6 +714,7 @@ int main(void)
         cmocka_unit_test(a_closed_valve_is_also_held_against_steady_flow),
         cmocka_unit_test(a_closed_valve_is_also_held_against_the_later_pressure),
         cmocka_unit_test(the_factor_of_the_test_is_the_nearest_one_stated),
+        cmocka_unit_test(still_water_of_the_higher_main_counts_for_both),
         cmocka_unit_test(a_level_offset_leaves_its_couple),
         cmocka_unit_test(an_upright_offset_has_a_pressure_at_each_level),
         cmocka_unit_test(two_bends_one_way_are_one_of_the_whole_turn),
