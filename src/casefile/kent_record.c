@@ -7,6 +7,7 @@
 #include <stdint.h>
 #include <stdlib.h>
 #include <string.h>
+#include <strings.h>
 
 static const struct {
     const char *group; /* kent_key.words of a reference */
@@ -449,13 +450,30 @@ static const struct {
     [KENT_100FT_FT] = {30.48, 0.3048, 100.0, "100ft+ft", "12+34.5", "1234.5 ft"},
 };
 
-/* "1+198" by the reader's station_style, or a length. */
+/* What people write before a station, without regard to capitals. */
+static const char *after_station_word(const char *s)
+{
+    static const char *const WORDS[] = {"km", "sta", "station", "ch", "chainage"};
+    for (size_t i = 0; i < sizeof WORDS / sizeof WORDS[0]; i++) {
+        const size_t n = strlen(WORDS[i]);
+        if (strncasecmp(s, WORDS[i], n) != 0) continue;
+        const char *rest = s + n + (s[n] == '.' ? 1 : 0);
+        const size_t gap = strspn(rest, " ");
+        if (gap > 0) return rest + gap;
+    }
+    return s;
+}
+
+/* "1+198" by the reader's station_style, or a length; "km 1+198" is never of hundreds.
+ */
 static void station(kent_reader *r, kent_record *record, const kent_key *key,
                     kent_field *f)
 {
     static const char DIGITS[] = "0123456789";
-    const char *s = kent_twig_text(f->twig);
+    const char *whole = kent_twig_text(f->twig);
+    const char *s = whole ? after_station_word(whole) : NULL;
     const size_t before = s ? strspn(s, DIGITS) : 0;
+    const bool kilometres = s != whole && strncasecmp(whole, "km", 2) == 0;
     double part = NAN;
     kent_error err = {0};
     if (!s || !strchr(s, '+') || s[0] == '+') {
@@ -469,14 +487,20 @@ static void station(kent_reader *r, kent_record *record, const kent_key *key,
         if (err.status == KENT_E_NOMEM) r->failed = true;
         complain(r, record, f->twig,
                  "%s = \"%.40s\" is no station; write \"%s\" or a length, as \"%s\"",
-                 key->key, s, STATIONS[r->station_style].example,
+                 key->key, whole, STATIONS[r->station_style].example,
                  STATIONS[r->station_style].length);
+    } else if (kilometres && r->station_style != KENT_KM_M) {
+        complain(r, record, f->twig,
+                 "%s = \"%.40s\" counts kilometres, and stations here are of style %s, "
+                 "as \"%s\"; site.station_style says how stations are written",
+                 key->key, whole, STATIONS[r->station_style].style,
+                 STATIONS[r->station_style].example);
     } else if (part >= STATIONS[r->station_style].most) {
         complain(
             r, record, f->twig,
             "%s = \"%.40s\" is no station of style %s, as \"%s\": what follows the "
             "+ stays below %g; site.station_style says how stations are written",
-            key->key, s, STATIONS[r->station_style].style,
+            key->key, whole, STATIONS[r->station_style].style,
             STATIONS[r->station_style].example, STATIONS[r->station_style].most);
     } else {
         f->number = STATIONS[r->station_style].large * (double)strtol(s, NULL, 10) +

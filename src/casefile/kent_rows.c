@@ -24,6 +24,7 @@ struct kent_rows {
     kent_rows_style style;
     column *columns; /* [column_count] */
     size_t column_count;
+    size_t first; /* of csv.rows that is a point or a pipe */
     /* The row last asked for. */
     kent_twig row;
     kent_twig *members; /* [column_count] */
@@ -170,6 +171,38 @@ static void read_heading(kent_reader *r, kent_rows *t, int line, size_t index,
                  c->key->key);
     } else {
         check_unit(r, t, line, c);
+    }
+}
+
+/* Some tables have their units in a row of their own below the headings. It is one
+ * where something stands under a quantity, nothing under anything else, no digit
+ * anywhere and no unit in any heading. */
+static bool is_unit_row(const kent_rows *t, const kent_csv_row *row)
+{
+    bool some = false;
+    for (size_t i = 0; i < row->count; i++) {
+        const char *cell = t->csv.cells[row->first + i];
+        if (cell[0] == '\0') continue;
+        if (i >= t->column_count || t->columns[i].unit[0] != '\0' ||
+            kind_of(t->columns[i].key) == KENT_RATIO || strlen(cell) > UNIT_MOST ||
+            strpbrk(cell, "0123456789")) {
+            return false;
+        }
+        some = true;
+    }
+    return some;
+}
+
+static void read_unit_row(kent_reader *r, kent_rows *t, const kent_csv_row *row)
+{
+    for (size_t i = 0; i < row->count && i < t->column_count; i++) {
+        const char *cell = t->csv.cells[row->first + i];
+        const size_t length = strlen(cell);
+        const bool bracketed = length > 2 && cell[0] == '[' && cell[length - 1] == ']';
+        (void)snprintf(t->columns[i].unit, sizeof t->columns[i].unit, "%.*s",
+                       (int)(bracketed ? length - 2 : length),
+                       bracketed ? cell + 1 : cell);
+        check_unit(r, t, row->line, &t->columns[i]);
     }
 }
 
@@ -359,10 +392,17 @@ static kent_status read_all(kent_reader *r, kent_rows *t, kent_error *err)
     if (r->failed) return kent_error_nomem(err);
     if (r->complaints->count > before) return KENT_E_INPUT;
     check_required(r, t, t->csv.rows[0].line);
-    if (t->csv.row_count == 1) {
+    t->first = 1;
+    if (t->csv.row_count > 1 && is_unit_row(t, &t->csv.rows[1])) {
+        read_unit_row(r, t, &t->csv.rows[1]);
+        t->first = 2;
+        if (r->failed) return kent_error_nomem(err);
+        if (r->complaints->count > before) return KENT_E_INPUT;
+    }
+    if (t->csv.row_count == t->first) {
         complain(r, t, t->csv.rows[0].line, "the table has headings and no rows");
     }
-    for (size_t i = 1; i < t->csv.row_count; i++) {
+    for (size_t i = t->first; i < t->csv.row_count; i++) {
         check_row(r, t, &t->csv.rows[i]);
     }
     return r->complaints->count > before ? KENT_E_INPUT : KENT_OK;
@@ -395,7 +435,7 @@ done:
 
 size_t kent_rows_count(const kent_rows *rows)
 {
-    return rows ? rows->csv.row_count - 1 : 0;
+    return rows ? rows->csv.row_count - rows->first : 0;
 }
 
 void kent_rows_free(kent_rows *rows)
@@ -507,7 +547,7 @@ static bool take_cell(kent_reader *r, kent_rows *t, column *c, const char *cell,
 
 const kent_twig *kent_rows_group(kent_reader *r, kent_rows *rows, size_t index)
 {
-    const kent_csv_row *row = &rows->csv.rows[index + 1];
+    const kent_csv_row *row = &rows->csv.rows[rows->first + index];
     rows->row = (kent_twig){.type = KENT_TWIG_GROUP,
                             .place = {rows->file, row->line},
                             .name = "",

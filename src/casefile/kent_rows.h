@@ -1,7 +1,7 @@
 /* The rows of a table (CSV) as groups that the record reader takes like those of a case
- * file. The headings are the keys of the group, with a unit in brackets: "z [m]"; a
- * cell may carry its own unit, an empty cell is a key left out, and a route is ids
- * separated by spaces. */
+ * file. The headings are the keys of the group, with a unit in brackets, "z [m]", or in
+ * a row of units below them; a cell may carry its own unit, an empty cell is a key left
+ * out, and a route is ids separated by spaces. */
 #ifndef KENT_ROWS_H
 #define KENT_ROWS_H
 

@@ -271,10 +271,14 @@ static void a_station_counts_by_its_style(void **state)
     assert_close(station_of(&r, "station = \"1+198\";\n"), 1198.0, 1e-15);
     assert_close(station_of(&r, "station = \"0+012.5\";\n"), 12.5, 1e-15);
     assert_close(station_of(&r, "station = \"350 m\";\n"), 350.0, 1e-15);
+    assert_close(station_of(&r, "station = \"km 1+198\";\n"), 1198.0, 1e-15);
+    assert_close(station_of(&r, "station = \"Ch. 0+350\";\n"), 350.0, 1e-15);
     r.station_style = KENT_100M_M;
     assert_close(station_of(&r, "station = \"11+98.5\";\n"), 1198.5, 1e-15);
     r.station_style = KENT_100FT_FT; /* 100 international feet of 0.3048 m */
     assert_close(station_of(&r, "station = \"12+34.5\";\n"), 1234.5 * 0.3048, 1e-15);
+    assert_close(station_of(&r, "station = \"STA 12+34.5\";\n"), 1234.5 * 0.3048,
+                 1e-15);
     reader_end(&r);
 }
 
@@ -293,6 +297,8 @@ static void a_station_of_another_style_is_refused(void **state)
     }
     assert_true(refused(&r, k, "\"1+1000\"", "stays below 1000"));
     r.station_style = KENT_100FT_FT;
+    assert_true(refused(&r, k, "\"km 1+98\"", "counts kilometres"));
+    assert_true(refused(&r, k, "\"at 1+98\"", "is no station; write"));
     assert_true(refused(&r, k, "\"1+198\"", "stays below 100; site.station_style"));
     reader_end(&r);
 }

@@ -108,6 +108,8 @@ static void every_way_of_writing_gives_the_same_points(void **state)
          "2e3,300,.7,E1\n\n,,,\n"},
         {0, "", /* columns that a spreadsheet keeps although they are empty */
          "id,x [m],y [m],z [m],,\nR1,0,0,50,,\nB1,400,0,30,,,,\nE1,700,300,20\n"},
+        {0, "", /* units in a row of their own */
+         "id,x,y,z\n,km,m,[cm]\nR1,0,0,5000\nB1,0.4,0,30 m\nE1,0.7,300,2000\n"},
         {0, "",
          "id,x,y [m],z [m]\nR1,0 m,0,50\nB1,0.4 km,0 m,30\nE1,700 m,300,2000 cm\n"},
         {';', "tables = { decimal = \"comma\"; separator = \"semicolon\"; };",
@@ -235,6 +237,12 @@ static void faults_of_headings_say_what_would_be_right(void **state)
          "heading 'z [m;1]': 'm;1' in '1 m;1' is not a unit; write for instance"},
         {NULL, "id,x [m,y [m],z [m]\n" ROWS, NULL, "points.csv", 1,
          "heading 'x [m' cannot be read"},
+        {NULL, "id,x,y,z\n,m,bar,m\n" ROWS, NULL, "points.csv", 2,
+         "heading 'y [bar]': '1 bar' is a pressure where a length belongs"},
+        {NULL, "id,x,y,z,soil\n,m,m,m,sand\n" ROWS, NULL, "points.csv", 3,
+         "the row has 4 cells"},
+        {NULL, "id,x,y,z\n,m,m,m\n", NULL, "points.csv", 1,
+         "the table has headings and no rows"},
         {NULL, "id,x [m],,z [m]\n" ROWS, NULL, "points.csv", 1,
          "column 3 has no heading; name it or take the column out"},
         {NULL, "id,x [m],y [m]\nR1,0,0\n", NULL, "points.csv", 1,
