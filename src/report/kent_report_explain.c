@@ -440,11 +440,12 @@ static void print_outcome(const kent_sheet *s)
 /* Of this fitting, then of the case and its runs. */
 static void print_cautions(const kent_sheet *s)
 {
-    static const char *const LEADS[] = {"-  ", "!  "}; /* as under the table */
-    const kent_notes *notes[] = {&s->holding->cautions, &s->results->cautions};
-    if (notes[0]->count + notes[1]->count == 0) return;
+    static const char *const LEADS[] = {"-  ", "-  ", "!  "}; /* as under the table */
+    const kent_notes *notes[] = {&s->holding->cautions, &s->holding->remarks,
+                                 &s->results->cautions};
+    if (notes[0]->count + notes[1]->count + notes[2]->count == 0) return;
     kent_text_add(s->out, "\nCautions\n");
-    for (size_t k = 0; k < 2; k++) {
+    for (size_t k = 0; k < sizeof notes / sizeof notes[0]; k++) {
         for (size_t i = 0; i < notes[k]->count; i++) {
             kent_table_paragraph(s->out, s->limit, LEADS[k], notes[k]->text[i]);
         }

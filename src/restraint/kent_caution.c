@@ -86,7 +86,7 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
 }
 
 /* Whether a face could press with less than its factor before the ground gives way by
- * its own angle and cohesion, although another bearing is stated. source 10.31 */
+ * its own angle and cohesion, although another bearing is stated. source 10.33 */
 static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
 {
     const kent_soil *s = w->soil;

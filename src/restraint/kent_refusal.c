@@ -368,7 +368,7 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
     h->cautions.failed = h->cautions.failed || t.failed;
     kent_text_clear(&t);
 
-    refuse_lengths(w, h, &h->cautions);
+    refuse_lengths(w, h, joints || !h->held ? &h->cautions : &h->remarks);
     for (size_t i = 0; i < w->met.count && (joints || !h->held); i++) {
         kent_notes_add(&h->cautions, "%s", w->met.text[i]);
     }

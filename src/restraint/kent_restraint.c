@@ -73,8 +73,8 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
     }
     kent_holding_caution(w, h);
     kent_holding_derive(w, h);
-    const bool lost =
-        h->cautions.failed || h->derivation.failed || w->met.failed || w->clear.failed;
+    const bool lost = h->cautions.failed || h->remarks.failed || h->derivation.failed ||
+                      w->met.failed || w->clear.failed;
     kent_notes_clear(&w->met);
     kent_notes_clear(&w->clear);
     return lost ? kent_error_nomem(err) : KENT_OK;
@@ -138,6 +138,7 @@ void kent_restraints_free(kent_restraints *r)
     if (!r) return;
     for (size_t i = 0; i < r->fitting_count; i++) {
         kent_notes_clear(&r->fittings[i].cautions);
+        kent_notes_clear(&r->fittings[i].remarks);
         kent_derivation_clear(&r->fittings[i].derivation);
     }
     free(r->fittings);

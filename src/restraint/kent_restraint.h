@@ -120,6 +120,8 @@ typedef struct kent_holding {
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */
     kent_notes cautions;      /* of this fitting; says what would help where not held */
+    kent_notes remarks;       /* why no length stands beside what holds it: for its hand
+                                 calculation alone */
     kent_derivation derivation; /* every step */
 } kent_holding;
 

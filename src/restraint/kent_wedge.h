@@ -24,7 +24,7 @@ double kent_wedge_clearance(const kent_wedge *wedge, double along, double across
 
 /* m from the fitting's centre to the wedge's farthest part in a level direction, along
  * and across the thrust (unit vector): what runs on square to it is clear only beyond.
- * fails never. source 10.30 */
+ * fails never. source 10.32 */
 double kent_wedge_farthest(const kent_wedge *wedge, double along, double across);
 
 #endif

@@ -85,13 +85,22 @@ kent_restraints *kent_hand_size(const kent_build *b, const kent_hand_case *cases
     return r;
 }
 
-/* Whether a caution holds these words. */
-bool kent_hand_says(const kent_holding *h, const char *words)
+static bool say(const kent_notes *notes, const char *words)
 {
-    for (size_t i = 0; i < h->cautions.count; i++) {
-        if (strstr(h->cautions.text[i], words)) return true;
+    for (size_t i = 0; i < notes->count; i++) {
+        if (strstr(notes->text[i], words)) return true;
     }
     return false;
+}
+
+bool kent_hand_says(const kent_holding *h, const char *words)
+{
+    return say(&h->cautions, words);
+}
+
+bool kent_hand_remarks(const kent_holding *h, const char *words)
+{
+    return say(&h->remarks, words);
 }
 
 void kent_hand_expect(const kent_holding *h, const char *words)

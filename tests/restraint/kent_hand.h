@@ -23,8 +23,10 @@ void kent_hand_clear(kent_loads_result *loads);
 kent_restraints *kent_hand_size(const kent_build *b, const kent_hand_case *cases,
                                 size_t count);
 
-/* Whether a caution holds these words; the other fails the test where none does. */
+/* Whether a caution, or a remark, holds these words; the last fails the test where no
+ * caution does. */
 bool kent_hand_says(const kent_holding *h, const char *words);
+bool kent_hand_remarks(const kent_holding *h, const char *words);
 void kent_hand_expect(const kent_holding *h, const char *words);
 
 /* Works out every printed formula of a hand calculation again from its printed digits,

@@ -1,4 +1,5 @@
-"""check_equations.py ROOT: every equation number cited in src/ stands in docs/theory.
+"""check_equations.py ROOT: every equation number cited in src/ stands in docs/theory,
+and none of them twice.
 
 Chapter N defines N.M as "(N.M)" behind a formula, or as "N.M" before it, at the start of
 an indented line or of a table's cell.
@@ -11,9 +12,12 @@ import sys
 
 def main(root):
     root = pathlib.Path(root)
-    defined = set()
+    defined, twice = set(), []
     for chapter in (root / "docs/theory").glob("[0-9][0-9]-*.md"):
         number = str(int(chapter.name[:2]))
+        formulas = re.findall(r"(?ms)^```\n(.*?)^```", chapter.read_text())
+        numbered = re.findall(rf"(?m)\(({number}\.\d+)\)$", "".join(formulas))
+        twice += sorted({n for n in numbered if numbered.count(n) > 1})
         defined |= set(re.findall(rf"\(({number}\.\d+)\)", chapter.read_text()))
         defined |= set(re.findall(rf"(?m)(?:^ +|\| )({number}\.\d+) ", chapter.read_text()))
     cited = {}
@@ -26,6 +30,7 @@ def main(root):
             cited.setdefault(number, file.relative_to(root))
     missing = [f"{file}: equation {number} is not in docs/theory"
                for number, file in sorted(cited.items()) if number not in defined]
+    missing += [f"equation {number} stands twice in docs/theory" for number in twice]
     if not defined or not cited:
         missing.append("no equations found")
     print("\n".join(missing) or f"{len(cited)} cited, {len(defined)} defined")
