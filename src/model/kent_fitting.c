@@ -1,12 +1,9 @@
-#include "kent_model_internal.h"
+#include "kent_fitting_internal.h"
 
-#include <assert.h>
 #include <math.h>
 #include <stdio.h>
 
 static const double PI = 3.14159265358979323846;
-static const double WYE_BELOW = 75.0 * 3.14159265358979323846 / 180.0; /* rad */
-static const double FLOW_BALANCE = 1.0e-6; /* of the largest flow, ports-only */
 
 enum { NO_FITTING = -1 };
 
@@ -27,40 +24,6 @@ typedef struct kent_site {
 } kent_site;
 
 static double degrees(double angle) { return angle * 180.0 / PI; }
-
-/* Whether a type may have so many legs, and branches without a pipe (0 or 1). */
-static bool type_fits(kent_fitting_type type, size_t count, size_t branches)
-{
-    switch (type) {
-    case KENT_BEND:
-    case KENT_REDUCER:
-    case KENT_STRAIGHT:
-    case KENT_CURVE:
-        return count == 2 && branches == 0;
-    case KENT_TEE:
-    case KENT_WYE:
-        return count + branches == 3;
-    case KENT_CROSS:
-        return count + branches >= 4;
-    case KENT_GROUP:
-        return count >= 1;
-    case KENT_DEAD_END:
-        return count == 1;
-    case KENT_VALVE:
-        return (count == 1 || count == 2) && branches == 0;
-    }
-    return false;
-}
-
-static kent_restraint_choice usual_restraint(const kent_fitting *f, bool rigid)
-{
-    if (f->within_deflection || f->type == KENT_STRAIGHT || f->type == KENT_CURVE) {
-        return KENT_NO_RESTRAINT;
-    }
-    if (rigid) return KENT_RESTRAINED_JOINTS;
-    return f->type == KENT_REDUCER || f->type == KENT_VALVE ? KENT_ANCHOR_BLOCK
-                                                            : KENT_THRUST_BLOCK;
-}
 
 /* The leg that one arm gives, direction apart. */
 static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm)
@@ -186,7 +149,7 @@ static int natural_type(const kent_site *site)
                                       : (int)NO_FITTING; /* NAN: none */
     }
     if (site->count + branch == 3) {
-        return branch_angle_of(site) < WYE_BELOW ? KENT_WYE : KENT_TEE;
+        return branch_angle_of(site) < KENT_WYE_BELOW ? KENT_WYE : KENT_TEE;
     }
     return KENT_CROSS;
 }
@@ -253,7 +216,8 @@ static int settle_type(const kent_site *site)
                             id);
         return NO_FITTING;
     }
-    if (!type_fits(asked, site->count, site->branch.end != KENT_BRANCH_NONE)) {
+    if (!kent_fitting_type_fits(asked, site->count,
+                                site->branch.end != KENT_BRANCH_NONE)) {
         kent_place_complain(m, note->place, site->complaints,
                             "fitting at \"%s\": %zu leg%s there cannot be a %s; leave "
                             "its type out, or correct the routes",
@@ -314,35 +278,6 @@ static bool settle_directions(const kent_site *site, kent_fitting_type type)
     return true;
 }
 
-/* What the legs themselves say: angle, way, sizes. */
-static void describe_legs(kent_fitting *f, const kent_port *ports, size_t legs)
-{
-    const kent_port *largest = &ports[kent_ports_largest(ports, f->port_count)];
-    f->size = largest->inside_diameter;
-    f->outside_diameter = largest->outside_diameter;
-    f->branch_size = (double)NAN;
-    f->orientation = KENT_HORIZONTAL;
-    if (f->type == KENT_BEND || f->type == KENT_CURVE) {
-        f->angle = kent_ports_turn(ports);
-        f->plan_turn = kent_ports_plan_turn(ports);
-        f->orientation = kent_ports_orientation(ports);
-    }
-    if (f->type == KENT_REDUCER && kent_ports_turn(ports) > KENT_LEAST_TURN) {
-        f->angle = kent_ports_turn(ports);
-    }
-    if (legs >= 3) {
-        f->angle = kent_ports_branch_angle(ports);
-        f->branch_size = ports[2].inside_diameter;
-    } else if (f->branch.end != KENT_BRANCH_NONE) {
-        f->branch_size = f->branch.inside_diameter;
-    }
-}
-
-static double first_given(double a, double b, double c)
-{
-    return !isnan(a) ? a : !isnan(b) ? b : c;
-}
-
 /* The zone that a point lies in, on the pipe whose stations it has before others; -1.
  */
 static int zone_of(const kent_model *m, const kent_layout *l, int point)
@@ -356,31 +291,6 @@ static int zone_of(const kent_model *m, const kent_layout *l, int point)
                             start ? m->station_on[stop] : m->station[stop]);
     }
     return zone;
-}
-
-/* note, point, zone, ground: the first that says something. */
-static void describe_ground(const kent_model *m, const kent_fitting_note *note,
-                            kent_fitting *f)
-{
-    const double nan = (double)NAN;
-    const kent_point *point = f->point >= 0 ? &m->points[f->point] : NULL;
-    const kent_ground_zone *zone = f->zone >= 0 ? &m->ground_zones[f->zone] : NULL;
-    const double outside =
-        isfinite(f->outside_diameter) ? f->outside_diameter : f->size;
-    const double of_point = point ? kent_point_cover(point, outside) : nan;
-    const double of_zone = zone ? zone->cover : nan;
-
-    f->cover = first_given(note ? note->cover : nan, of_point,
-                           first_given(of_zone, m->ground.cover, nan));
-    f->water_table = first_given(point ? point->water_table : nan,
-                                 zone ? zone->water_table : nan, m->ground.water_table);
-    f->soil = m->ground.soil;
-    f->trench = m->ground.trench;
-    if (zone && zone->soil >= 0) f->soil = zone->soil;
-    if (zone && zone->trench >= 0) f->trench = zone->trench;
-    if (point && point->soil >= 0) f->soil = point->soil;
-    if (note && note->soil >= 0) f->soil = note->soil;
-    f->weight = note && isfinite(note->weight) ? note->weight : 0.0;
 }
 
 static void caution_turning(const kent_site *site, const kent_fitting *f)
@@ -445,7 +355,7 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                           .port_count = site.count,
                           .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
-    describe_legs(out, ports, site.count);
+    kent_fitting_describe_legs(out, ports, site.count);
     if (site.branch.end != KENT_BRANCH_NONE) {
         if (site.count == 2) out->angle = branch_angle_of(&site);
         if (kent_branch_port(&site.branch, &ports[site.count])) out->port_count++;
@@ -456,106 +366,13 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
         out->curve_length = l->arc[l->owner[point]];
         kent_curve_caution(m, out, &m->pipes[l->pipe[l->owner[point]]]);
     }
-    describe_ground(m, note, out);
+    kent_fitting_describe_ground(m, note, out);
     /* A bend named as one is a casting; one found by its small turn is a joint. */
     out->within_deflection = type == KENT_BEND && !(note && note->type >= 0) &&
                              !site.schematic && out->angle <= site.deflection;
     out->restraint = note && note->restraint >= 0
                          ? (kent_restraint_choice)note->restraint
-                         : usual_restraint(out, site.rigid);
+                         : kent_fitting_usual_restraint(out, site.rigid);
     caution_turning(&site, out);
-    return true;
-}
-
-/* Copies the legs a case states, with defaults; complains of what cannot be. */
-static bool copy_given(const kent_model *m, const kent_fitting_note *note,
-                       kent_port *ports, kent_complaints *complaints)
-{
-    double net = 0.0, largest = 0.0;
-    if (note->port_count > KENT_ARMS) {
-        kent_place_complain(m, note->place, complaints,
-                            "fitting \"%s\" has %zu ports; at most %d are known",
-                            note->id, note->port_count, KENT_ARMS);
-        return false;
-    }
-    for (size_t i = 0; i < note->port_count; i++) {
-        kent_port *port = &ports[i];
-        *port = m->given_ports[note->port_first + i];
-        port->kind = KENT_PORT_GIVEN;
-        port->span = port->toward = -1;
-        port->sign = 1.0;
-        if (!(kent_vec3_length(port->direction) > 0.0)) {
-            kent_place_complain(m, note->place, complaints,
-                                "fitting \"%s\": port %zu has no direction; write for "
-                                "instance direction = [ 1.0, 0.0, 0.0 ]",
-                                note->id, i + 1);
-            return false;
-        }
-        port->direction = kent_vec3_unit(port->direction);
-        port->seal_diameter = first_given(port->seal_diameter, port->outside_diameter,
-                                          port->inside_diameter);
-        net += port->flow;
-        largest = fmax(largest, fabs(port->flow));
-    }
-    if (fabs(net) <= FLOW_BALANCE * largest) return true; /* NaN falls through */
-    kent_place_complain(m, note->place, complaints,
-                        "fitting \"%s\": its flows, positive outwards, add up to %.6g "
-                        "m3/s instead of nothing; what comes in must go out",
-                        note->id, net);
-    return false;
-}
-
-static kent_fitting_type type_of_ports(const kent_port *ports, size_t count)
-{
-    if (count == 1) return KENT_DEAD_END;
-    if (count == 3) {
-        return kent_ports_branch_angle(ports) < WYE_BELOW ? KENT_WYE : KENT_TEE;
-    }
-    if (count > 3) return KENT_CROSS;
-    if (kent_ports_turn(ports) > KENT_LEAST_TURN) return KENT_BEND;
-    return kent_ports_same_size(&ports[0], &ports[1]) ? KENT_STRAIGHT : KENT_REDUCER;
-}
-
-bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
-                             kent_fitting *out, kent_port *ports,
-                             kent_complaints *complaints)
-{
-    if (note->point >= 0) {
-        kent_place_complain(m, note->place, complaints,
-                            "fitting \"%s\" has both at and ports; keep one of them",
-                            note->id);
-        return false;
-    }
-    if (!copy_given(m, note, ports, complaints)) return false;
-    if (note->port_count >= 3) kent_ports_run_first(ports, note->port_count);
-    const kent_fitting_type type = note->type >= 0
-                                       ? (kent_fitting_type)note->type
-                                       : type_of_ports(ports, note->port_count);
-    if (!type_fits(type, note->port_count, 0)) {
-        kent_place_complain(m, note->place, complaints,
-                            "fitting \"%s\": a %s does not have %zu port%s", note->id,
-                            kent_fitting_type_word(type), note->port_count,
-                            note->port_count == 1 ? "" : "s");
-        return false;
-    }
-    const double nan = (double)NAN;
-    *out = (kent_fitting){.point = -1,
-                          .type = type,
-                          .at = {nan, nan, nan},
-                          .station = nan,
-                          .valve = -1,
-                          .curve_radius = nan,
-                          .curve_length = nan,
-                          .zone = -1,
-                          .role = note->role,
-                          .obstacle_first = note->obstacle_first,
-                          .obstacle_count = note->obstacle_count,
-                          .port_count = note->port_count,
-                          .place = note->place};
-    (void)snprintf(out->id, sizeof out->id, "%s", note->id);
-    describe_legs(out, ports, note->port_count);
-    describe_ground(m, note, out);
-    out->restraint = note->restraint >= 0 ? (kent_restraint_choice)note->restraint
-                                          : usual_restraint(out, false);
     return true;
 }

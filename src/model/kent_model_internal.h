@@ -124,8 +124,9 @@ void kent_ports_schematic(kent_port *ports, size_t count, double angle,
 /* Turns below this are how a survey was rounded, not a fitting. rad: 0.5 degrees */
 static const double KENT_LEAST_TURN = 0.5 * 3.14159265358979323846 / 180.0;
 
-/* kent_fitting.c: one fitting. Returns false where the point carries none; fitting and
- * ports (at most KENT_ARMS, out->port_count) are then not written. */
+/* kent_fitting.c, kent_fitting_given.c: one fitting. Returns false where the point
+ * carries none; fitting and ports (at most KENT_ARMS, out->port_count) are then not
+ * written. */
 bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
                      const kent_fitting_note *note, kent_fitting *out, kent_port *ports,
                      kent_complaints *complaints);
