@@ -85,6 +85,7 @@ static kent_status write_file(const output_file *f, const char *name,
     const kent_status closed = kent_folder_close(folder, stream, name, err);
     if (written == KENT_E_NOMEM) return kent_error_nomem(err);
     if (written && !closed) {
+        /* unreached: what a full disk breaks, closing the stream tells first */
         return kent_error_set(err, written, name, "%s", kent_status_text(written));
     }
     return closed;
