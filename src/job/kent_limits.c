@@ -39,8 +39,9 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
     size_t named = 0;
     for (size_t i = 0; i < m->point_count; i++) {
         if (!run->touched[i]) continue;
-        if (named < NAMED)
+        if (named < NAMED) {
             kent_text_add(&where, named ? ", %s" : "%s", m->points[i].id);
+        }
         named++;
     }
     if (named > NAMED) kent_text_add(&where, " and %zu more", named - NAMED);

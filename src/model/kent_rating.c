@@ -8,8 +8,9 @@ double kent_pipe_rating(const kent_pipe *p, kent_rating rating)
     case KENT_RATING_SERVICE:
         break;
     case KENT_RATING_RECURRING:
-        if (isnan(p->recurring_rating)) return kent_pipe_rating(p, KENT_RATING_SURGE);
-        return p->derating * p->recurring_rating;
+        if (!isnan(p->recurring_rating)) return p->derating * p->recurring_rating;
+        if (!isnan(p->surge_rating)) return p->derating * p->surge_rating;
+        break;
     case KENT_RATING_SURGE:
         if (!isnan(p->surge_rating)) return p->derating * p->surge_rating;
         break;

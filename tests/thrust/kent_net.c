@@ -34,8 +34,9 @@ void kent_net_finish(kent_net *n)
 
     kent_loads_free(n->loads);
     n->loads = NULL;
-    if (kent_recorder_finish(n->recorder, NULL, &n->loads, &err))
+    if (kent_recorder_finish(n->recorder, NULL, &n->loads, &err)) {
         fail_msg("%s", err.what);
+    }
 }
 
 const kent_fitting *kent_net_fitting(const kent_net *n, const char *id)
