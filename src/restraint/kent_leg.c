@@ -194,23 +194,6 @@ static bool leg_meets(const kent_model *m, const kent_standings *standings,
     return true;
 }
 
-/* The first route index of the span's part whose chainage is not below x. */
-static size_t route_search(const kent_model *m, const kent_span *s, double x)
-{
-    size_t lo = s->route_first, hi = s->route_first + s->route_count;
-    const double start = m->chainage[s->route_first];
-
-    while (lo < hi) {
-        const size_t mid = lo + (hi - lo) / 2;
-        if (m->chainage[mid] - start < x) {
-            lo = mid + 1;
-        } else {
-            hi = mid;
-        }
-    }
-    return lo;
-}
-
 /* Whether the ground along the leg can be relied on at every point of it: at those with
  * a soil of their own, and within its first `own` (m), where the fitting's ground is
  * taken to go on. */
@@ -223,7 +206,8 @@ static bool leg_ground(const kent_model *m, const kent_port *p, double length,
     const double to = ahead ? p->chainage + length : p->chainage - SAME_PLACE;
     const size_t end = span->route_first + span->route_count;
 
-    for (size_t i = route_search(m, span, from); i < end; i++) {
+    for (size_t i = kent_stop_search(m, span->route_first, span->route_count, from);
+         i < end; i++) {
         const double there = m->chainage[i] - m->chainage[span->route_first];
         if (there > to) break;
         const bool beyond = fabs(there - p->chainage) > own;

@@ -211,15 +211,14 @@ static kent_ground_here part_ground(const kent_model *m, const leg_part *part,
     return here;
 }
 
-/* The first stop of a pipe at or beyond a chainage. */
-static size_t stop_search(const kent_model *m, const kent_pipe *pipe, double chainage)
+size_t kent_stop_search(const kent_model *m, size_t first, size_t count,
+                        double chainage)
 {
-    size_t lo = pipe->route_first, hi = pipe->route_first + pipe->route_count;
-    const double start = m->chainage[pipe->route_first];
+    size_t lo = first, hi = first + count;
 
     while (lo < hi) {
         const size_t mid = lo + (hi - lo) / 2;
-        if (m->chainage[mid] - start < chainage) {
+        if (m->chainage[mid] - m->chainage[first] < chainage) {
             lo = mid + 1;
         } else {
             hi = mid;
@@ -253,7 +252,9 @@ static unsigned part_weaken(const kent_model *m, const leg_part *part, double be
     kent_ground_here ground = part_ground(m, part, end - SAME_PLACE);
     unsigned lack = piece_weaken(m, &ground, -1, w, piece);
 
-    for (size_t k = stop_search(m, pipe, fmin(a, b)); k < stops && lack == 0; k++) {
+    for (size_t k =
+             kent_stop_search(m, pipe->route_first, pipe->route_count, fmin(a, b));
+         k < stops && lack == 0; k++) {
         const double there = m->chainage[k] - start;
         const double away = fabs(there - part->from);
         if (there > fmax(a, b)) break;

@@ -53,6 +53,11 @@ typedef struct kent_leg_piece {
     double length;            /* m */
 } kent_leg_piece;
 
+/* Of `count` stops from `first` on, the first whose chainage from there (m) is not
+ * below this one; first + count where all are. */
+size_t kent_stop_search(const kent_model *m, size_t first, size_t count,
+                        double chainage);
+
 /* Everything that gives one leg's length, kept for the hand calculation. */
 typedef struct kent_leg_work {
     const kent_pipe *pipe;

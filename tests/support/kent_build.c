@@ -381,6 +381,16 @@ const char *kent_build_complaint(kent_build *b)
     return b->complaints.kept[0].what;
 }
 
+void kent_build_refused(kent_build *b, const char *text, int line)
+{
+    const char *what = kent_build_complaint(b);
+    if (!strstr(what, text)) fail_msg("\"%s\" is not in \"%s\"", text, what);
+    assert_int_equal(b->complaints.count, 1);
+    assert_string_equal(b->complaints.kept[0].file, "built.cfg");
+    assert_int_equal(b->complaints.kept[0].line, line);
+    kent_build_clear(b);
+}
+
 int kent_build_span_of(const kent_build *b, const char *id)
 {
     for (size_t i = 0; i < b->model->span_count; i++) {

@@ -99,6 +99,10 @@ void kent_build_derive(kent_build *b);
 /* Derives and expects complaints: returns the first one's text (b's). */
 const char *kent_build_complaint(kent_build *b);
 
+/* Derives and expects one complaint, holding this text, at this line of "built.cfg";
+ * clears b. */
+void kent_build_refused(kent_build *b, const char *text, int line);
+
 /* Derived things by id, failing the test where there is none. */
 int kent_build_span_of(const kent_build *b, const char *id);
 int kent_build_fitting_of(const kent_build *b, const char *id);
