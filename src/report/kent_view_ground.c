@@ -141,6 +141,29 @@ void kent_view_ground(const kent_view *v)
 
 /* ---- loads ----------------------------------------------------------------------- */
 
+/* What the test comes to: by a rule its pressure, where steady flow was found; and the
+ * water that the main may take up meanwhile. */
+static void add_test_found(const kent_view *v, kent_text *out)
+{
+    const kent_model *m = v->model;
+    kent_shown s;
+    for (size_t i = 0; i < m->state_count; i++) {
+        if (!v->steadies || !v->steadies[i]) return;
+    }
+    const kent_site_test t = kent_site_test_find(m, v->steadies, NULL);
+    if (t.rule != KENT_TEST_FIXED && isfinite(t.pressure)) {
+        kent_text_add(out, ": %s", said(v, KENT_PRESSURE, t.pressure, &s));
+    }
+    const double allowance = kent_site_test_main_allowance(m, &t);
+    if (!isfinite(allowance)) return;
+    const bool us = v->units == KENT_US;
+    const double gallon = 3.785411784; /* L, of the US */
+    kent_text_add(out,
+                  "; testing allowance of all pipes together %.3g %s by AWWA C600, "
+                  "where it holds",
+                  3.6e6 * allowance / (us ? gallon : 1.0), us ? "US gal/h" : "L/h");
+}
+
 static void add_test(const kent_view *v, kent_text *out)
 {
     const kent_loads *l = &v->model->loads;
@@ -171,6 +194,7 @@ static void add_test(const kent_view *v, kent_text *out)
                       l->test_factor, at);
         break;
     }
+    add_test_found(v, out);
     kent_text_add(out, ". ");
 }
 

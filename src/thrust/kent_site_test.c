@@ -8,6 +8,7 @@
 /* AWWA C600, hydrostatic test: on the working pressure at the gauge, and at the main's
  * highest point. */
 static const double C600_AT_GAUGE = 1.5, C600_AT_TOP = 1.25;
+static const double C600_DIVISOR = 148000.0; /* of the testing allowance */
 
 /* EN 805:2000, 11.3.2: system test pressure over the maximum design pressure. */
 static const double EN805_CALCULATED = 100e3;                         /* Pa */
@@ -35,6 +36,31 @@ double kent_site_test_en805_calculated(double design)
 double kent_site_test_en805_assumed(double design)
 {
     return fmin(EN805_ASSUMED_RATIO * design, design + EN805_ASSUMED);
+}
+
+/* L = S D sqrt(P) / 148 000, in US gallons an hour, ft, in and psi. */
+double kent_site_test_allowance(double length, double diameter, double pressure)
+{
+    const double foot = 0.3048, inch = 0.0254, psi = 6894.757293168361; /* m, m, Pa */
+    const double gallon_an_hour = 3.785411784e-3 / 3600.0;              /* m3/s */
+    if (!(pressure > 0.0)) return 0.0;
+    return length / foot * (diameter / inch) * sqrt(pressure / psi) / C600_DIVISOR *
+           gallon_an_hour;
+}
+
+double kent_site_test_main_allowance(const kent_model *m, const kent_site_test *t)
+{
+    double all = 0.0;
+    if (!isfinite(t->pressure) || t->gauge < 0) return (double)NAN;
+    for (size_t i = 0; i < m->span_count; i++) {
+        const kent_span *span = &m->spans[i];
+        const double start = kent_span_level(m, span, 0.0);
+        const double end = kent_span_level(m, span, span->length);
+        const double fall = m->points[t->gauge].at.z - 0.5 * (start + end);
+        const double mean = t->pressure + m->water.density * m->gravity * fall;
+        all += kent_site_test_allowance(span->length, span->bore, mean);
+    }
+    return all;
 }
 
 /* ---- what a main works under ----------------------------------------------------- */

@@ -28,6 +28,11 @@ double kent_site_test_en805_calculated(double design);
  * the maximum design pressure with it (Pa) and of it and 500 kPa (docs/theory 9.11). */
 double kent_site_test_en805_assumed(double design);
 
+/* m3/s that a new main of iron or PVC may take up while it is held under test, by AWWA
+ * C600: length and nominal diameter m, pressure the mean of the test, Pa (docs/theory
+ * 9.14). Editions up to 1999 allowed a ninth more. */
+double kent_site_test_allowance(double length, double diameter, double pressure);
+
 /* ---- of a main ------------------------------------------------------------------- */
 
 /* The most that some cases bring, and which of them where. */
@@ -54,6 +59,10 @@ typedef struct kent_site_test {
  * none was run yet, so that the pressure stays unknown. */
 kent_site_test kent_site_test_find(const kent_model *m, kent_steady *const *steadies,
                                    const kent_worst *surge);
+
+/* m3/s: the allowance over all pipes, on their bores, under this test's pressure at the
+ * gauge; NAN: the pressure is not known, or no gauge is stated. */
+double kent_site_test_main_allowance(const kent_model *m, const kent_site_test *t);
 
 /* The rule as in the case file: "C600" ...; "given" of a pressure stated outright. */
 const char *kent_site_test_rule_word(kent_test_rule rule);

@@ -340,6 +340,15 @@ class App(unittest.TestCase):
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 
+    def test_check_says_what_a_test_by_rule_comes_to(self):
+        case = SOURCE / "cases" / "learn" / "9-us-units" / "9-us-units.cfg"
+        said = " ".join(self.call("check", str(case)).stdout.split())
+        data = json.loads(self.call("run", str(case), "--no-files", "--format=json").stdout)
+        self.assertEqual(data["test"]["rule"], "C600")
+        psi = data["test"]["pressure_Pa"] / 6894.757293168361
+        self.assertIn(f"Site test by AWWA C600, read at E: {psi:.1f} psi; testing allowance",
+                      said)
+
     def test_a_member_s_name_finds_the_group(self):
         case = str(SOURCE / "cases" / "design" / "kettlowe" / "kettlowe.cfg")
         r = self.call("explain", case, "R1", "--scenario", "zones")

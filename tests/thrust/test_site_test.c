@@ -25,6 +25,41 @@ static void c600_tests_at_one_and_a_half_times_what_works_there(void **state)
                  1e-12);
 }
 
+/* AWWA C600, testing allowance per 1000 ft at 150 psi, US gallons an hour: a published
+ * table's rows, to its hundredths. */
+static void c600_allows_for_water_made_up(void **state)
+{
+    (void)state;
+    static const double ROWS[][2] = {
+        {4.0, 0.33}, {8.0, 0.66}, {12.0, 0.99}, {24.0, 1.99}, {42.0, 3.48}};
+    const double gallon_an_hour = 231.0 * 0.0254 * 0.0254 * 0.0254 / 3600.0; /* m3/s */
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        const double got =
+            kent_site_test_allowance(304.8, 0.0254 * ROWS[i][0], 150.0 * PSI);
+        assert_within(got / gallon_an_hour, ROWS[i][1], 0.005);
+    }
+    assert_true(kent_site_test_allowance(304.8, 0.3, 0.0) == 0.0);
+}
+
+/* A pipe that falls by 20 m to the gauge is held at 10 m less in the mean. */
+static void the_allowance_of_a_main_goes_by_the_mean_pressure(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "R", 0.0, 0.0, 20.0);
+    kent_build_point(&b, "E", 300.0, 0.0, 0.0);
+    kent_build_pipe(&b, "A", "R E", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 40.0);
+    kent_build_derive(&b);
+    const kent_site_test t = {.pressure = 10.0 * BAR, .gauge = 1};
+    const double want = kent_site_test_allowance(
+        hypot(300.0, 20.0), 0.3, 10.0 * BAR - 10.0 * RHO * b.model->gravity);
+    assert_close(kent_site_test_main_allowance(b.model, &t), want, 1e-12);
+    const kent_site_test nowhere = {.pressure = 10.0 * BAR, .gauge = -1};
+    assert_true(isnan(kent_site_test_main_allowance(b.model, &nowhere)));
+    kent_build_clear(&b);
+}
+
 /* And 1.25 times at the highest point: with still water up to it, 10 bar at the gauge
  * and 100 m of rise leave 0.1934 bar there, so that the gauge needs 10.05 bar: less
  * than 15. With the gauge 10 m above what works under 10 bar, 1.25 x 10 bar there ask
@@ -216,6 +251,8 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(c600_tests_at_one_and_a_half_times_what_works_there),
+        cmocka_unit_test(c600_allows_for_water_made_up),
+        cmocka_unit_test(the_allowance_of_a_main_goes_by_the_mean_pressure),
         cmocka_unit_test(c600_also_looks_at_the_highest_point),
         cmocka_unit_test(en805_without_a_surge_calculation),
         cmocka_unit_test(en805_with_the_surge_computed),
