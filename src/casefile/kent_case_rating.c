@@ -96,8 +96,7 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
     if (material && own && share < 1.0) say_taken_warm(f, record, material, share);
     const bool reduced = of_class && material && material->derating_count > 0;
     if (reduced) assume_share(f, material, share);
-    /* One share serves all three: where the case gives some, the others are reduced
-     * here. */
+    /* One share serves all: where the case gives some, the others are reduced here. */
     const double here = own ? share : 1.0;
     p->derating = own || isnan(share) ? 1.0 : share;
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {

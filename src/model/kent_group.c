@@ -185,18 +185,35 @@ static void group_asked(kent_joining *j, const kent_fitting_note *note,
 
 static double least(double a, double b) { return isnan(a) || b < a ? b : a; }
 
+/* Whether a soil holds nothing, or none is stated. */
+static bool holds_nothing(const kent_model *m, int soil)
+{
+    if (soil < 0) return true;
+    const kent_soil *s = &m->soils[soil];
+    return s->unreliable || s->allowable_bearing <= 0.0; /* NaN: another route */
+}
+
+/* The first member's soil is a group's, unless another lies in ground that holds
+ * nothing. */
+static void take_soil(const kent_joining *j, const kent_fitting *member,
+                      kent_fitting *group)
+{
+    const kent_model *m = j->m;
+    if (member->soil == group->soil) return;
+    if (holds_nothing(m, member->soil)) group->soil = member->soil;
+    kent_notes_add(&j->m->cautions,
+                   "the fittings held as one at \"%s\" lie in different soils: %s is "
+                   "used",
+                   group->id,
+                   group->soil >= 0 ? m->soils[group->soil].id
+                                    : "none, as stated for one");
+}
+
 /* What of a member's own a group cannot carry is said. */
 static void caution_lost(const kent_joining *j, const kent_fitting *group,
                          const kent_fitting *member)
 {
     kent_notes *cautions = &j->m->cautions;
-    if (member->soil != group->soil) {
-        kent_notes_add(
-            cautions,
-            "the fittings held as one at \"%s\" lie in different soils: that "
-            "at \"%s\" is used",
-            group->id, group->id);
-    }
     if (member->obstacle_count > 0 && group->obstacle_first != member->obstacle_first) {
         kent_notes_add(cautions,
                        "obstacles near \"%s\" are not looked at, since it is held as "
@@ -219,6 +236,7 @@ static void take_in(const kent_joining *j, const kent_fitting *member, size_t nu
     group->at = kent_vec3_add(
         group->at, kent_vec3_scale(share, kent_vec3_sub(member->at, group->at)));
     if (number == 0) return;
+    take_soil(j, member, group);
     caution_lost(j, group, member);
     group->weight += member->weight;
     group->cover = least(group->cover, member->cover);

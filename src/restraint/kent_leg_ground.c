@@ -274,16 +274,17 @@ static unsigned part_need(const kent_model *m, const leg_part *part, double left
     const double length = pipe_length(m, part->pipe);
     const double whole = part->ahead ? length - part->from : part->from;
     const double most = fmin(part->reach, whole);
+    double need = left / piece->resistance; /* not finite: nothing holds */
     double looked = 0.0;
 
-    *needed = left / piece->resistance; /* not finite: nothing holds */
-    while (looked<most && * needed> looked * (1.0 + NEAR_ENOUGH)) {
-        const double to = fmin(*needed, most);
+    while (looked < most && need > looked * (1.0 + NEAR_ENOUGH)) {
+        const double to = fmin(need, most);
         const unsigned lack = part_weaken(m, part, looked, to, w, piece);
         if (lack != 0) return lack;
-        *needed = left / piece->resistance;
+        need = left / piece->resistance;
         looked = to;
     }
+    *needed = need;
     return 0;
 }
 

@@ -228,6 +228,23 @@ static void a_group_takes_the_least_cover_of_its_members(void **state)
     kent_build_clear(&b);
 }
 
+/* Whichever member comes first: a block does not lean on peat because its fellow lies
+ * in sand. */
+static void a_member_in_ground_that_holds_nothing_decides(void **state)
+{
+    (void)state;
+    for (int peat = 1; peat <= 2; peat++) { /* points P and Q */
+        kent_build b = offset_in_plan(2.0, KENT_RESTRAINED);
+        kent_build_soil(&b, "peat", 0.0, 11e3, 1.5);
+        kent_build_soil(&b, "sand", 80e3, 18e3, 1.2);
+        b.model->points[peat].soil = 0;
+        kent_build_derive(&b);
+        assert_int_equal(fitting(&b, "P")->soil, 0);
+        assert_non_null(strstr(b.model->cautions.text[0], "peat is used"));
+        kent_build_clear(&b);
+    }
+}
+
 static void put_open_branch(kent_build *b, const char *at)
 {
     const int note = kent_build_note(b, at);
@@ -307,6 +324,7 @@ static void without_coordinates_fittings_are_not_added_up(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_member_in_ground_that_holds_nothing_decides),
         cmocka_unit_test(a_group_of_more_legs_than_can_be_worked_out_is_refused),
         cmocka_unit_test(bends_close_together_on_joints_that_hold_are_one),
         cmocka_unit_test(apart_keeps_them_apart),
