@@ -4,6 +4,7 @@
 
 #include "kent_friction.h"
 #include "kent_profile.h"
+#include "kent_pump.h"
 #include "kent_valve.h"
 #include "kent_water.h"
 #include "kent_wave.h"

@@ -15,19 +15,19 @@ static bool complain(const kent_model *m, const kent_fitting_note *note,
 }
 
 bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
-                        kent_device device, size_t legs, kent_complaints *complaints)
+                        kent_seat device, size_t legs, kent_complaints *complaints)
 {
     const bool branch = note->branch.end != KENT_BRANCH_NONE;
     const bool served = note->role != KENT_ROLE_NONE;
     const bool end = note->role == KENT_ROLE_HYDRANT && legs == 1;
 
     if (!branch && !served) return true;
-    if (device.kind == KENT_DEVICE_VALVE) {
+    if (device.kind == KENT_SEAT_VALVE) {
         return complain(m, note, complaints,
                         "a valve stands there; give what branches off a point of its "
                         "own on the pipe");
     }
-    if (device.kind == KENT_DEVICE_LEVEL) {
+    if (device.kind == KENT_SEAT_LEVEL) {
         return complain(m, note, complaints,
                         "a fixed level stands there; give what branches off a point "
                         "of its own on the pipe");
@@ -41,7 +41,7 @@ bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
             m->points[note->point].id, kent_role_word(note->role));
         return false;
     }
-    if (note->branch.end == KENT_BRANCH_OPEN && device.kind != KENT_DEVICE_OUTFLOW) {
+    if (note->branch.end == KENT_BRANCH_OPEN && device.kind != KENT_SEAT_OUTFLOW) {
         kent_place_complain(m, note->place, complaints,
                             "fitting at \"%s\": its branch is open, but nothing is "
                             "drawn there; add an outflow at \"%s\", or end the branch "

@@ -11,7 +11,7 @@ enum { NO_FITTING = -1 };
 typedef struct kent_site {
     kent_model *m;
     int point;
-    kent_device device;
+    kent_seat device;
     const kent_fitting_note *note; /* NULL: nothing said */
     kent_complaints *complaints;
     kent_port *ports; /* [count] at most KENT_ARMS are kept */
@@ -129,13 +129,13 @@ static void order_legs(kent_site *site)
 /* What geometry and devices make of a point. */
 static int natural_type(const kent_site *site)
 {
-    const kent_device_kind device = site->device.kind;
-    if (device == KENT_DEVICE_VALVE) return KENT_VALVE;
-    if (device == KENT_DEVICE_LEVEL) return NO_FITTING; /* the pipe ends in a tank */
+    const kent_seat_kind device = site->device.kind;
+    if (device == KENT_SEAT_VALVE) return KENT_VALVE;
+    if (device == KENT_SEAT_LEVEL) return NO_FITTING; /* the pipe ends in a tank */
     const bool branch = site->branch.end != KENT_BRANCH_NONE;
     const bool hydrant = site->note && site->note->role == KENT_ROLE_HYDRANT;
     if (site->count == 1) {
-        const bool end = device != KENT_DEVICE_OUTFLOW || branch || hydrant;
+        const bool end = device != KENT_SEAT_OUTFLOW || branch || hydrant;
         return end ? (int)KENT_DEAD_END : (int)NO_FITTING;
     }
     if (site->curved) return KENT_CURVE; /* kent_curve_check saw to its legs */
@@ -206,7 +206,7 @@ static int settle_type(const kent_site *site)
         return type;
     }
     const kent_fitting_type asked = (kent_fitting_type)note->type;
-    const bool valve_here = site->device.kind == KENT_DEVICE_VALVE;
+    const bool valve_here = site->device.kind == KENT_SEAT_VALVE;
     if (valve_here != (asked == KENT_VALVE)) {
         kent_place_complain(m, note->place, site->complaints,
                             valve_here ? "fitting at \"%s\": a valve stands there; "

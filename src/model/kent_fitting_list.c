@@ -59,7 +59,7 @@ static void keep_last(kent_model *m)
 /* Whether a pipe ends at the point in an outflow, of which nothing more is said. */
 static bool ends_unsaid(const kent_model *m, const kent_layout *l, int point)
 {
-    return l->device[point].kind == KENT_DEVICE_OUTFLOW && l->note[point] < 0 &&
+    return l->device[point].kind == KENT_SEAT_OUTFLOW && l->note[point] < 0 &&
            l->first[point + 1] - l->first[point] == 1 &&
            !kent_layout_runs_through(m, l, l->stop[l->first[point]]);
 }

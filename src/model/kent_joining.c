@@ -78,7 +78,7 @@ static size_t port_of_arm(const kent_joining *j, int fitting, kent_arm arm)
 static bool go_on(const kent_joining *j, int point, kent_arm came, kent_arm *out)
 {
     kent_arm arms[KENT_ARMS];
-    if (j->l->device[point].kind == KENT_DEVICE_LEVEL) return false;
+    if (j->l->device[point].kind == KENT_SEAT_LEVEL) return false;
     if (kent_layout_arms(j->m, j->l, point, arms) != 2) return false;
     const bool first = arms[0].stop == came.stop && arms[0].leaves == came.leaves;
     *out = arms[first ? 1 : 0];

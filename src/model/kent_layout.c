@@ -122,7 +122,7 @@ bool kent_layout_is_cut(const kent_model *m, const kent_layout *l, size_t stop)
     const int point = m->route[stop];
     return is_first_stop(m, l, stop) || is_last_stop(m, l, stop) ||
            l->first[point + 1] - l->first[point] > 1 ||
-           l->device[point].kind != KENT_NO_DEVICE;
+           l->device[point].kind != KENT_SEAT_FREE;
 }
 
 int kent_arm_toward(const kent_model *m, kent_arm arm)
@@ -132,7 +132,7 @@ int kent_arm_toward(const kent_model *m, kent_arm arm)
 
 /* Stands a device at a point; false, with a complaint, where none or another may. name:
  * "fixed level" or "valve \"V1\"". */
-static bool stand(const kent_model *m, kent_layout *l, kent_device device, int point,
+static bool stand(const kent_model *m, kent_layout *l, kent_seat device, int point,
                   kent_place place, const char *name, kent_complaints *complaints)
 {
     const char *id = m->points[point].id;
@@ -143,7 +143,7 @@ static bool stand(const kent_model *m, kent_layout *l, kent_device device, int p
                             name, id);
         return false;
     }
-    if (l->device[point].kind != KENT_NO_DEVICE) {
+    if (l->device[point].kind != KENT_SEAT_FREE) {
         kent_place_complain(m, place, complaints,
                             "%s at \"%s\": another device stands there; one device per "
                             "point in this version, so give each a point of its own",
@@ -186,19 +186,19 @@ void kent_layout_place_devices(const kent_model *m, kent_layout *l,
 {
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         const kent_fixed_level *level = &m->fixed_levels[i];
-        (void)stand(m, l, (kent_device){KENT_DEVICE_LEVEL, (int)i}, level->point,
+        (void)stand(m, l, (kent_seat){KENT_SEAT_LEVEL, (int)i}, level->point,
                     level->place, "fixed level", complaints);
     }
     for (size_t i = 0; i < m->outflow_count; i++) {
         const kent_outflow *outflow = &m->outflows[i];
-        (void)stand(m, l, (kent_device){KENT_DEVICE_OUTFLOW, (int)i}, outflow->point,
+        (void)stand(m, l, (kent_seat){KENT_SEAT_OUTFLOW, (int)i}, outflow->point,
                     outflow->place, "outflow", complaints);
     }
     for (size_t i = 0; i < m->valve_count; i++) {
         const kent_valve *valve = &m->valves[i];
         char name[KENT_ID + 16];
         (void)snprintf(name, sizeof name, "valve \"%s\"", valve->id);
-        if (stand(m, l, (kent_device){KENT_DEVICE_VALVE, (int)i}, valve->point,
+        if (stand(m, l, (kent_seat){KENT_SEAT_VALVE, (int)i}, valve->point,
                   valve->place, name, complaints)) {
             check_valve(m, l, valve, complaints);
         }

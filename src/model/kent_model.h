@@ -126,21 +126,191 @@ typedef struct kent_valve {
     kent_place place;
 } kent_valve;
 
-typedef enum kent_event_kind { KENT_EVENT_VALVE, KENT_EVENT_OUTFLOW } kent_event_kind;
+/* ---- devices. Their fields bear the names of the case's keys. A device stands in line
+ * where two pipes meet at its point, discharges where one ends there, or stands beside
+ * the point; beside an in-line device it is on the side of the next point `next_to`. */
+
+typedef enum kent_check_kind {
+    KENT_CHECK_NONE,
+    KENT_CHECK_IDEAL,  /* shuts as the flow reverses */
+    KENT_CHECK_DELAYED /* stays open for `delay` after the flow first reverses */
+} kent_check_kind;
+
+/* Units of one kind side by side, each with a check valve behind it or none. */
+typedef struct kent_pump {
+    char id[KENT_ID];
+    int point;
+    int flow_to;           /* the next point in flow direction, of one in line; -1 */
+    double suction_level;  /* m, that one at a pipe's end draws from; NAN in line */
+    int in_parallel;       /* units */
+    int running;           /* of them in the steady state */
+    kent_pump_curve curve; /* of one unit at its rated speed */
+    double inertia;        /* kg m2 of one unit: pump with water, motor, flywheel */
+    bool inertia_estimated;
+    kent_check_kind check_valve;
+    double check_delay; /* s: key check_valve_delay */
+    double check_loss;  /* s2/m5 of one unit's check valve when open; 0: none */
+    double check_size;  /* m; NAN: not given */
+    int node[2];        /* derived: [0] suction (-1: the suction level), [1] delivery */
+    kent_place place;
+} kent_pump;
+
+typedef struct kent_check_valve { /* in line */
+    char id[KENT_ID];
+    int point, flow_to;
+    double size;  /* m */
+    double loss;  /* K on its size when open */
+    double delay; /* s from first reversal to closure */
+    int node[2];  /* derived: flow from [0] to [1] */
+    kent_place place;
+} kent_check_valve;
+
+typedef enum kent_holds {
+    KENT_HOLDS_DOWNSTREAM, /* reduces: at most set_pressure behind it */
+    KENT_HOLDS_UPSTREAM    /* sustains: at least set_pressure before it */
+} kent_holds;
+
+typedef struct kent_control_valve { /* in line; lets nothing back */
+    char id[KENT_ID];
+    int point, flow_to;
+    kent_holds holds;
+    double set_pressure;               /* Pa, at the point's level */
+    double size;                       /* m */
+    double capacity;                   /* m^2.5/s at full opening */
+    double opening_time, closure_time; /* s for the whole stroke */
+    int node[2];
+    kent_place place;
+} kent_control_valve;
+
+typedef struct kent_surge_tank { /* open to the air; its level in the steady state is
+                                    the head there */
+    char id[KENT_ID];
+    int point, next_to;
+    double area;           /* m2 of its surface */
+    double bottom_level;   /* m; below it air would enter: the run stops saying so */
+    double overflow_level; /* m; INFINITY: none */
+    double connection_diameter; /* m, that the losses are on */
+    double loss_in, loss_out;   /* K into the tank, out of it */
+    int node;
+    kent_place place;
+} kent_surge_tank;
+
+typedef struct kent_one_way_tank { /* feeds the main when the head falls below level */
+    char id[KENT_ID];
+    int point, next_to;
+    double area;         /* m2 */
+    double level;        /* m, when nothing happens */
+    double bottom_level; /* m; empty there; -INFINITY: never */
+    double connection_diameter;
+    double loss_out; /* K */
+    int node;
+    kent_place place;
+} kent_one_way_tank;
+
+typedef struct kent_air_vessel {
+    char id[KENT_ID];
+    int point, next_to;
+    double total_volume, gas_volume; /* m3; the gas in the steady state */
+    double polytropic_exponent;
+    double water_level; /* m, in the steady state; NAN: the point's */
+    double area;        /* m2 in plan, by which the level moves; INFINITY: it doesn't */
+    double connection_diameter;
+    double loss_in, loss_out; /* K into the vessel, out of it */
+    int node;
+    kent_place place;
+} kent_air_vessel;
+
+typedef struct kent_relief_valve {
+    char id[KENT_ID];
+    int point, next_to;
+    double set_pressure, full_open_pressure; /* Pa, at the point's level */
+    double low_set_pressure; /* Pa: a fall below it opens it too, before the surge
+                                returns; NAN: it does not anticipate */
+    double hold_time;        /* s that it then stays open */
+    double size;             /* m */
+    double capacity;         /* m^2.5/s at full opening */
+    double opening_time, closure_time; /* s for the whole stroke */
+    double discharge_level;            /* m; the point's where not given */
+    int node;
+    kent_place place;
+} kent_relief_valve;
+
+typedef struct kent_air_valve {
+    char id[KENT_ID];
+    int point, next_to;
+    int in_parallel;
+    double admission_orifice, release_orifice; /* m, diameters */
+    double admission_coefficient, release_coefficient;
+    double switch_pressure;  /* Pa inside at which release goes over to ... */
+    double switched_orifice; /* m: this one, of a non-slam valve; NAN: none */
+    int node;
+    kent_place place;
+} kent_air_valve;
+
+/* Where some scenario breaks the pipe: a hole to the air, shut until then. */
+typedef struct kent_burst {
+    int point;
+    int node;
+    kent_place place;
+} kent_burst;
+
+typedef enum kent_device_kind {
+    KENT_DEVICE_PUMP,
+    KENT_DEVICE_CHECK_VALVE,
+    KENT_DEVICE_CONTROL_VALVE,
+    KENT_DEVICE_SURGE_TANK,
+    KENT_DEVICE_ONE_WAY_TANK,
+    KENT_DEVICE_AIR_VESSEL,
+    KENT_DEVICE_RELIEF_VALVE,
+    KENT_DEVICE_AIR_VALVE,
+    KENT_DEVICE_BURST,
+    KENT_DEVICE_KINDS
+} kent_device_kind;
+
+/* Derived: one device of those above, for whoever treats them alike. In line: water
+ * flows from node[0] to node[1]; a pump that draws from a suction level has node[0] -1.
+ * Beside a point: node[0], and node[1] -1; flow is positive out of the main. */
+typedef struct kent_device {
+    kent_device_kind kind;
+    int index; /* into the model's array of that kind */
+    int point;
+    int node[2];
+    const char *id; /* its own; a burst's is its point's */
+} kent_device;
+
+typedef enum kent_event_kind {
+    KENT_EVENT_VALVE,
+    KENT_EVENT_OUTFLOW,
+    KENT_EVENT_PUMP,
+    KENT_EVENT_FIXED_LEVEL,
+    KENT_EVENT_BURST
+} kent_event_kind;
+
+typedef enum kent_action {
+    KENT_TRIP,  /* power is lost: the speed follows from inertia and torque */
+    KENT_START, /* from standstill to rated speed in ramp_time */
+    KENT_STOP,  /* to standstill in ramp_time */
+    KENT_RAMP   /* to a share `to` of the rated speed in ramp_time */
+} kent_action;
 
 typedef struct kent_event {
     kent_event_kind kind;
-    int target;        /* index of the valve or outflow */
-    double start_time; /* s */
-    double ramp_time;  /* s; NAN where a law is given */
-    double to;         /* opening, or flow in m3/s; NAN where a law is given */
+    int target;         /* index of the valve, outflow, pump, fixed level or burst */
+    kent_action action; /* of a pump */
+    int how_many;       /* units; 0: all that run, or to start: all that stand */
+    double start_time;  /* s */
+    double ramp_time;   /* s; NAN where a law is given, and of a trip */
+    double to; /* opening, flow in m3/s, share of the rated speed, area of a burst in
+                  m2; NAN where a law is given */
+    double coefficient;          /* of discharge, of a burst */
+    double period;               /* s after which a law begins again; NAN: never */
     size_t law_first, law_count; /* into kent_model.law; count 0: the ramp */
     kent_place place;
 } kent_event;
 
 typedef struct kent_law_point {
     double time;  /* s after start_time */
-    double value; /* opening, or flow m3/s */
+    double value; /* opening, flow m3/s, or level m */
 } kent_law_point;
 
 typedef enum kent_class {
@@ -154,8 +324,11 @@ typedef struct kent_scenario {
     char title[160];
     double duration; /* s */
     kent_class class_of;
-    size_t event_first, event_count; /* into kent_model.events */
-    size_t state_first, state_count; /* into kent_model.scenario_states; 0: all */
+    size_t event_first, event_count;     /* into kent_model.events */
+    size_t state_first, state_count;     /* into kent_model.scenario_states; 0: all */
+    size_t without_first, without_count; /* into kent_model.without */
+    int same_as;         /* scenario whose events it repeats, to be set beside it; -1 */
+    bool for_comparison; /* it decides no load case and no limit */
     kent_place place;
 } kent_scenario;
 
@@ -164,12 +337,24 @@ typedef struct kent_state_level {
     double level;    /* m above datum */
 } kent_state_level;
 
+/* A device by its array, before kent_model.devices is derived. */
+typedef struct kent_left_out {
+    kent_device_kind kind;
+    int index;
+} kent_left_out;
+
+typedef struct kent_state_running {
+    int pump;
+    int running; /* units */
+} kent_state_running;
+
 /* A steady flow that scenarios may start from. A case without states has one,
  * "normal". */
 typedef struct kent_state {
     char id[KENT_ID];
-    size_t level_first, level_count; /* into kent_model.state_levels */
-    double outflow_factor;           /* on every outflow */
+    size_t level_first, level_count;     /* into kent_model.state_levels */
+    size_t running_first, running_count; /* into kent_model.state_running */
+    double outflow_factor;               /* on every outflow */
     double roughness_factor; /* on roughness, n and f; Hazen-Williams' C is divided */
     kent_place place;
 } kent_state;
@@ -299,11 +484,20 @@ typedef struct kent_rules {
 typedef enum kent_surge_friction {
     KENT_SURGE_NONE,
     KENT_SURGE_CONSTANT,
-    KENT_SURGE_QUASI_STEADY
+    KENT_SURGE_QUASI_STEADY,
+    KENT_SURGE_UNSTEADY /* quasi-steady, and what it remembers of past accelerations */
 } kent_surge_friction;
+
+typedef enum kent_separation {
+    KENT_SEPARATION_NONE,
+    KENT_SEPARATION_VAPOUR, /* discrete vapour cavities */
+    KENT_SEPARATION_GAS     /* discrete gas cavities */
+} kent_separation;
 
 typedef struct kent_solver {
     kent_surge_friction friction;
+    kent_separation column_separation;
+    bool creep; /* plastic walls creep by their material's elements */
     bool grid_check;
     double wave_speed_tolerance; /* - */
     int min_reaches;
@@ -445,6 +639,7 @@ typedef struct kent_node {
     size_t end_first, end_count; /* into kent_model.ends */
     kent_node_kind kind;
     int device; /* index into fixed_levels, outflows or valves; -1 */
+    size_t stand_first, stand_count; /* into kent_model.stands: what else is here */
 } kent_node;
 
 typedef struct kent_fitting {
@@ -521,6 +716,24 @@ typedef struct kent_model {
     size_t outflow_count;
     kent_valve *valves;
     size_t valve_count;
+    kent_pump *pumps;
+    size_t pump_count;
+    kent_check_valve *check_valves;
+    size_t check_valve_count;
+    kent_control_valve *control_valves;
+    size_t control_valve_count;
+    kent_surge_tank *surge_tanks;
+    size_t surge_tank_count;
+    kent_one_way_tank *one_way_tanks;
+    size_t one_way_tank_count;
+    kent_air_vessel *air_vessels;
+    size_t air_vessel_count;
+    kent_relief_valve *relief_valves;
+    size_t relief_valve_count;
+    kent_air_valve *air_valves;
+    size_t air_valve_count;
+    kent_burst *bursts; /* one for each point that an event breaks */
+    size_t burst_count;
     kent_scenario *scenarios;
     size_t scenario_count;
     kent_event *events;
@@ -545,6 +758,11 @@ typedef struct kent_model {
     size_t state_level_count;
     int *scenario_states; /* [scenario_state_count] */
     size_t scenario_state_count;
+    kent_state_running *state_running;
+    size_t state_running_count;
+    kent_left_out *without; /* [without_count] devices beside the main that a scenario
+                               leaves out */
+    size_t without_count;
     kent_ground_zone *ground_zones;
     size_t ground_zone_count;
     kent_obstacle *obstacles;
@@ -566,7 +784,11 @@ typedef struct kent_model {
     size_t span_count;
     kent_node *nodes;
     size_t node_count;
-    kent_end *ends; /* [2 span_count], grouped by node */
+    kent_end *ends;       /* [2 span_count], grouped by node */
+    kent_device *devices; /* [device_count] by kind, then as the case lists them */
+    size_t device_count;
+    int *stands; /* [stand_count] into devices, grouped by node; an in-line one twice */
+    size_t stand_count;
     kent_port *ports;
     size_t port_count;
     kent_fitting *fittings; /* by route and station, ports-only last */
@@ -596,9 +818,9 @@ void kent_model_free(kent_model *m);
 kent_status kent_model_derive(kent_model *m, kent_complaints *complaints);
 
 /* The main in one of its states: shares everything with m, which must outlive it, but
- * the levels, outflows and friction that the state changes. capacity [valve_count]:
- * what valves with a stated flow were found to pass in the first state; NULL: not known
- * yet. Free it with kent_model_view_free alone. NULL: no memory. */
+ * the levels, outflows, running pumps and friction that the state changes. capacity
+ * [valve_count]: what valves with a stated flow were found to pass in the first state;
+ * NULL: not known yet. Free it with kent_model_view_free alone. NULL: no memory. */
 kent_model *kent_model_in_state(const kent_model *m, int state, const double *capacity);
 void kent_model_view_free(kent_model *view);
 
@@ -666,6 +888,7 @@ void kent_model_place_text(const kent_model *m, kent_place place, char *out,
 int kent_model_point_index(const kent_model *m, const char *id);
 int kent_model_pipe_index(const kent_model *m, const char *id);
 int kent_model_valve_index(const kent_model *m, const char *id);
+int kent_model_device_index(const kent_model *m, const char *id); /* into devices */
 /* By its own id, else by that of one of its members. */
 int kent_model_fitting_of(const kent_model *m, const char *id);
 
@@ -677,6 +900,7 @@ const char *kent_trench_word(int trench); /* "type-1" ...; "" for -1 */
 const char *kent_orientation_word(kent_orientation orientation);
 const char *kent_joint_word(kent_joint joint);
 const char *kent_class_word(kent_class class_of);
+const char *kent_device_word(kent_device_kind kind); /* "air vessel" ... */
 const char *kent_restraint_word(kent_restraint_choice restraint);
 const char *kent_friction_word(kent_friction_law law);
 const char *kent_axial_support_word(kent_axial_support support);

@@ -11,17 +11,17 @@
 
 enum { KENT_ARMS = 8 }; /* most legs of one fitting */
 
-typedef enum kent_device_kind {
-    KENT_NO_DEVICE,
-    KENT_DEVICE_LEVEL,
-    KENT_DEVICE_OUTFLOW,
-    KENT_DEVICE_VALVE
-} kent_device_kind;
+typedef enum kent_seat_kind {
+    KENT_SEAT_FREE,
+    KENT_SEAT_LEVEL,
+    KENT_SEAT_OUTFLOW,
+    KENT_SEAT_VALVE
+} kent_seat_kind;
 
-typedef struct kent_device {
-    kent_device_kind kind;
+typedef struct kent_seat {
+    kent_seat_kind kind;
     int index; /* into the model's list of its kind */
-} kent_device;
+} kent_seat;
 
 typedef struct kent_arm {
     size_t stop;
@@ -30,18 +30,18 @@ typedef struct kent_arm {
 
 /* Who meets where. kent_layout l = {0}; is a valid, empty one. */
 typedef struct kent_layout {
-    size_t *first;       /* [point_count + 1] into stop */
-    size_t *stop;        /* [route_count] stops grouped by point, rising */
-    int *pipe;           /* [route_count] of each stop */
-    size_t *owner;       /* [point_count] the stop whose stations a point's are: the
-                            first that a route runs through, else the first; any number
-                            where there is none */
-    int *note;           /* [point_count] what the case says of its fitting; -1 */
-    kent_device *device; /* [point_count] */
-    double *station;     /* [point_count] m; NAN: on no route */
-    int *arm_node;       /* [2 route_count] -1: the pipe isn't cut there */
-    int *arm_span;       /* [2 route_count] -1: no such arm */
-    double *arc;         /* [route_count] m along the curve at a stop; 0: none */
+    size_t *first;     /* [point_count + 1] into stop */
+    size_t *stop;      /* [route_count] stops grouped by point, rising */
+    int *pipe;         /* [route_count] of each stop */
+    size_t *owner;     /* [point_count] the stop whose stations a point's are: the
+                          first that a route runs through, else the first; any number
+                          where there is none */
+    int *note;         /* [point_count] what the case says of its fitting; -1 */
+    kent_seat *device; /* [point_count] */
+    double *station;   /* [point_count] m; NAN: on no route */
+    int *arm_node;     /* [2 route_count] -1: the pipe isn't cut there */
+    int *arm_span;     /* [2 route_count] -1: no such arm */
+    double *arc;       /* [route_count] m along the curve at a stop; 0: none */
 } kent_layout;
 
 /* kent_layout.c */
@@ -137,7 +137,7 @@ bool kent_fitting_from_ports(const kent_model *m, const kent_fitting_note *note,
 /* kent_branch.c: what branches off without a pipe, and what a fitting serves. legs:
  * of pipes; each returns false with a complaint. */
 bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
-                        kent_device device, size_t legs, kent_complaints *complaints);
+                        kent_seat device, size_t legs, kent_complaints *complaints);
 /* Unit, out of the fitting; ports [legs] have their directions. surveyed: x and y are
  * the case's own, so that the branch's direction can be stated in them. */
 bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,

@@ -12,33 +12,33 @@ static bool is_first_at_point(const kent_layout *l, const kent_model *m, size_t 
     return l->stop[l->first[m->route[stop]]] == stop;
 }
 
-static bool is_in_line(const kent_model *m, kent_device device)
+static bool is_in_line(const kent_model *m, kent_seat device)
 {
-    return device.kind == KENT_DEVICE_VALVE &&
+    return device.kind == KENT_SEAT_VALVE &&
            isnan(m->valves[device.index].discharge_level);
 }
 
-static kent_node_kind node_kind(kent_device_kind kind)
+static kent_node_kind node_kind(kent_seat_kind kind)
 {
     switch (kind) {
-    case KENT_NO_DEVICE:
+    case KENT_SEAT_FREE:
         return KENT_NODE_JUNCTION;
-    case KENT_DEVICE_LEVEL:
+    case KENT_SEAT_LEVEL:
         return KENT_NODE_FIXED_LEVEL;
-    case KENT_DEVICE_OUTFLOW:
+    case KENT_SEAT_OUTFLOW:
         return KENT_NODE_OUTFLOW;
-    case KENT_DEVICE_VALVE:
+    case KENT_SEAT_VALVE:
         return KENT_NODE_VALVE;
     }
     return KENT_NODE_JUNCTION;
 }
 
-static int add_node(kent_model *m, int point, kent_device device)
+static int add_node(kent_model *m, int point, kent_seat device)
 {
     m->nodes[m->node_count] =
         (kent_node){.point = point,
                     .kind = node_kind(device.kind),
-                    .device = device.kind == KENT_NO_DEVICE ? -1 : device.index};
+                    .device = device.kind == KENT_SEAT_FREE ? -1 : device.index};
     return (int)m->node_count++;
 }
 
@@ -53,20 +53,20 @@ static void join_arms(kent_layout *l, int point, int node)
 
 static void make_nodes_at(kent_model *m, kent_layout *l, int point)
 {
-    const kent_device device = l->device[point];
+    const kent_seat device = l->device[point];
     const int node = add_node(m, point, device);
 
     join_arms(l, point, node);
     switch (device.kind) {
-    case KENT_NO_DEVICE:
+    case KENT_SEAT_FREE:
         break;
-    case KENT_DEVICE_LEVEL:
+    case KENT_SEAT_LEVEL:
         m->fixed_levels[device.index].node = node;
         break;
-    case KENT_DEVICE_OUTFLOW:
+    case KENT_SEAT_OUTFLOW:
         m->outflows[device.index].node = node;
         break;
-    case KENT_DEVICE_VALVE:
+    case KENT_SEAT_VALVE:
         m->valves[device.index].node[0] = node;
         m->valves[device.index].node[1] = -1;
         if (is_in_line(m, device)) {

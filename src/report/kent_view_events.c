@@ -73,8 +73,19 @@ static double start_of(const kent_model *m, const kent_scenario *s, size_t k)
         if (!last || other->start_time > last->start_time) last = other;
     }
     if (last) return end_of(m, last);
-    return e->kind == KENT_EVENT_VALVE ? m->valves[e->target].opening
-                                       : m->outflows[e->target].flow;
+    switch (e->kind) {
+    case KENT_EVENT_VALVE:
+        return m->valves[e->target].opening;
+    case KENT_EVENT_OUTFLOW:
+        return m->outflows[e->target].flow;
+    case KENT_EVENT_PUMP:
+        return m->pumps[e->target].running > 0 ? 1.0 : 0.0;
+    case KENT_EVENT_FIXED_LEVEL:
+        return m->fixed_levels[e->target].level;
+    case KENT_EVENT_BURST:
+        break;
+    }
+    return 0.0;
 }
 
 static void add_value(const kent_view *v, kent_event_kind kind, double value,
@@ -87,6 +98,15 @@ static void add_value(const kent_view *v, kent_event_kind kind, double value,
         break;
     case KENT_EVENT_OUTFLOW:
         kent_text_add(out, "%s", said(v, KENT_FLOW, value, &s));
+        break;
+    case KENT_EVENT_PUMP:
+        kent_text_add(out, "%.3g of its rated speed", value);
+        break;
+    case KENT_EVENT_FIXED_LEVEL:
+        kent_text_add(out, "%s", said(v, KENT_LENGTH, value, &s));
+        break;
+    case KENT_EVENT_BURST:
+        kent_text_add(out, "%s", said(v, KENT_AREA, value, &s));
         break;
     }
 }
@@ -104,6 +124,17 @@ static void add_event(const kent_view *v, const kent_scenario *s, size_t k,
     case KENT_EVENT_OUTFLOW:
         kent_text_add(out, "the outflow at %s goes from ",
                       kent_view_point(m, m->outflows[e->target].point));
+        break;
+    case KENT_EVENT_PUMP:
+        kent_text_add(out, "pump %s goes from ", m->pumps[e->target].id);
+        break;
+    case KENT_EVENT_FIXED_LEVEL:
+        kent_text_add(out, "the level at %s goes from ",
+                      kent_view_point(m, m->fixed_levels[e->target].point));
+        break;
+    case KENT_EVENT_BURST:
+        kent_text_add(out, "a burst at %s opens from ",
+                      kent_view_point(m, m->bursts[e->target].point));
         break;
     }
     add_value(v, e->kind, start_of(m, s, k), out);

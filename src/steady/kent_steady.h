@@ -30,6 +30,8 @@ typedef struct kent_steady {
     double *valve_capacity; /* [valve_count] m^2.5/s at full opening; found where the
                                case gives the flow instead */
     double *outflow;        /* [outflow_count] m3/s drawn */
+    double *device_flow;    /* [device_count] m3/s, as kent_device says; all units of a
+                               pump together; 0 of what is shut or at rest */
     kent_steady_report report;
 } kent_steady;
 

@@ -233,7 +233,7 @@ size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
         k->started = true;
         record(k, row++);
     }
-    *trace = (kent_trace){row, k->eye_count, k->time, k->head, k->flow};
+    *trace = (kent_trace){row, k->eye_count, 0, k->time, k->head, k->flow, NULL};
     if (row < count) {
         (void)kent_error_set(err, k->stopped.status, k->stopped.where, "%s",
                              k->stopped.what);

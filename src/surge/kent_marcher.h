@@ -17,13 +17,30 @@ typedef struct kent_watch {
     double chainage;
 } kent_watch;
 
+/* What a device shows at every instant besides its flow. */
+enum { KENT_TOLD = 3 };
+typedef struct kent_device_quantity {
+    const char *name; /* as in results: "gas_volume_m3"; NULL: nothing there */
+    const char *word; /* for people: "gas volume" */
+    kent_kind kind;
+} kent_device_quantity;
+/* [KENT_TOLD] of a kind of device; SI. */
+const kent_device_quantity *kent_device_quantities(kent_device_kind kind);
+
+/* Of one device at one instant. */
+typedef struct kent_device_row {
+    double flow; /* m3/s, as kent_device says */
+    double told[KENT_TOLD];
+} kent_device_row;
+
 /* `count` instants after one another. Rows of [watch_count]; valid until the next call.
  */
 typedef struct kent_trace {
-    size_t count, watch_count;
+    size_t count, watch_count, device_count;
     const double *time; /* [count] s */
     const double *head; /* [count][watch_count] m, piezometric */
     const double *flow; /* [count][watch_count] m3/s, positive along the span */
+    const kent_device_row *devices; /* [count][device_count], the model's */
 } kent_trace;
 
 typedef struct kent_marcher kent_marcher;
@@ -53,6 +70,23 @@ void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,
 
 /* Heads and flows now at every grid point of a span, [reaches + 1] each. For tests. */
 void kent_marcher_profile(const kent_marcher *k, int span, double *head, double *flow);
+
+/* A cavity that opened at a grid point or an end. */
+typedef struct kent_cavity {
+    int span;          /* of the grid point; -1: at a node */
+    double chainage;   /* m from the span's start */
+    int node;          /* -1: at a grid point inside a span */
+    double largest;    /* m3 */
+    double largest_at; /* s */
+    double opened;     /* s, first */
+    double collapsed;  /* s, last; NAN: not yet */
+    int count;         /* times that it opened */
+    double pulse;      /* m: largest rise of head on a collapse; NAN: none yet */
+} kent_cavity;
+
+/* Every place where a cavity opened so far, largest first; at most `most` are written
+ * to out. Returns how many there are. None with KENT_SEPARATION_NONE. */
+size_t kent_marcher_cavities(const kent_marcher *k, kent_cavity *out, size_t most);
 
 /* Where the head fell below the vapour limit at any instant: sets touched[point] for
  * every point at or next to such a grid point, and returns how many grid points did. */

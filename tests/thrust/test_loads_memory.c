@@ -20,7 +20,8 @@ static int whole_stage(void *context)
     kent_status status = kent_recorder_new(n->model, &n->steady, &r, &err);
     if (status) goto done;
     (void)kent_recorder_watches(r, &watches);
-    const kent_trace trace = {2, watches, TIME, HEAD, FLOW};
+    const kent_trace trace = {
+        .count = 2, .watch_count = watches, .time = TIME, .head = HEAD, .flow = FLOW};
     assert_true(2 * watches <= 24);
     kent_recorder_start(r, 0, 0.1);
     kent_recorder_take(r, 0, &trace);
