@@ -11,16 +11,17 @@
  * settle takes the accepted flow and heads and moves the state on to the new instant.
  * t = 0: start, from the steady state. A device left out is never asked: q = 0.
  *
- * A new device is one row of KENT_DEVICE_OPS in kent_device.c, its functions in a file
- * of its own, kent_at_NAME.c. None allocates. None calls libm but sqrt (kent_log,
- * kent_pow of base/ instead), so that bits are the same everywhere. */
+ * A new device is a file kent_at_NAME.c, whose one public name is its kent_device_ops,
+ * declared below, and one row of KENT_DEVICE_OPS in kent_device.c. None allocates. None
+ * calls libm but sqrt (kent_log, kent_pow of base/ instead), so that bits are the same
+ * everywhere. */
 #ifndef KENT_DEVICE_INTERNAL_H
 #define KENT_DEVICE_INTERNAL_H
 
 #include "kent_marcher.h"
 #include "kent_schedule_internal.h"
 
-/* Bytes of a device's state between instants; a row asserts that its own fits. */
+/* Bytes of a device's state between instants; its file asserts that its own fits. */
 enum { KENT_DEVICE_STATE = 512 };
 
 typedef struct kent_device_state {
@@ -34,6 +35,7 @@ typedef struct kent_device_law {
 } kent_device_law;
 
 typedef struct kent_device_ops {
+    kent_device_quantity quantities[KENT_TOLD]; /* what `tell` tells, in this order */
     /* flow: m3/s in the steady state; head: m at its nodes then (that of the suction
      * level, or of the point's level in free air, where there is no node). Fails with
      * KENT_E_INPUT where the steady state does not suit it (a tank overflows). */
@@ -45,14 +47,18 @@ typedef struct kent_device_ops {
     kent_device_law (*law)(const kent_device_state *state, double flow,
                            const double head[2]);
     void (*settle)(kent_device_state *state, double flow, const double head[2]);
-    /* What histories and extremes show besides the flow, in the order of
-     * kent_device_quantities; the rest is left alone. */
+    /* What histories and extremes show besides the flow; the rest is left alone. NULL
+     * where there is nothing. */
     void (*tell)(const kent_device_state *state, double told[KENT_TOLD]);
     /* NULL, or where the state is beyond what it can be: "tank ST is empty"; the march
-     * stops with it. */
+     * stops with it. NULL where it never is. */
     const char *(*beyond)(const kent_device_state *state);
 } kent_device_ops;
 
-extern const kent_device_ops KENT_DEVICE_OPS[KENT_DEVICE_KINDS];
+/* By kind; NULL: not in this version. */
+extern const kent_device_ops *const KENT_DEVICE_OPS[KENT_DEVICE_KINDS];
+
+/* KENT_E_INPUT where some device of m is of a kind without a row. */
+kent_status kent_device_check(const kent_model *m, kent_error *err);
 
 #endif

@@ -333,10 +333,19 @@ void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time)
     for (size_t i = 0; i < schedule->course_count; i++) {
         const kent_course *course = &schedule->courses[i];
         const double value = kent_schedule_value(schedule, course, time);
-        if (course->kind == KENT_EVENT_VALVE) {
+        switch (course->kind) {
+        case KENT_EVENT_VALVE:
             set_capacity(&e->gates[course->target], value);
-        } else {
+            break;
+        case KENT_EVENT_OUTFLOW:
             e->draws[course->target].flow = value;
+            break;
+        case KENT_EVENT_FIXED_LEVEL:
+            e->levels[course->target].level = value;
+            break;
+        case KENT_EVENT_PUMP:
+        case KENT_EVENT_BURST:
+            break; /* asked by the device itself */
         }
     }
 }
