@@ -50,10 +50,19 @@ typedef struct kent_device_ops {
     /* What histories and extremes show besides the flow; the rest is left alone. NULL
      * where there is nothing. */
     void (*tell)(const kent_device_state *state, double told[KENT_TOLD]);
-    /* NULL, or where the state is beyond what it can be: "tank ST is empty"; the march
-     * stops with it. NULL where it never is. */
+    /* NULL, or where the state is beyond what it can be, as a sentence goes on after
+     * what it is and its id: "is empty: ..."; the march stops with it. NULL where it
+     * never is. */
     const char *(*beyond)(const kent_device_state *state);
+    /* The same of what does not stop the march but must be told with the results:
+     * "overflowed"; at any instant, of all that happened since t = 0. NULL where there
+     * is never anything. */
+    const char *(*caution)(const kent_device_state *state);
 } kent_device_ops;
+
+extern const kent_device_ops KENT_AT_SURGE_TANK, KENT_AT_ONE_WAY_TANK,
+    KENT_AT_AIR_VESSEL, KENT_AT_RELIEF_VALVE, KENT_AT_AIR_VALVE, KENT_AT_CONTROL_VALVE,
+    KENT_AT_BURST;
 
 /* By kind; NULL: not in this version. */
 extern const kent_device_ops *const KENT_DEVICE_OPS[KENT_DEVICE_KINDS];

@@ -1,5 +1,6 @@
 #include "kent_schedule_internal.h"
 
+#include <math.h>
 #include <stdlib.h>
 
 /* Share of a ramp that rounding of a counted time may leave undone: "shut" must mean
@@ -10,12 +11,18 @@ static double by_law(const kent_move *move, double elapsed)
 {
     const kent_law_point *law = move->law;
     const size_t n = move->event->law_count;
+    const double period = move->event->period;
     size_t i = 0;
+    double before = move->from; /* its first point */
 
+    if (period > 0.0 && elapsed >= period) {
+        elapsed -= period * floor(elapsed / period);
+        before = law[n - 1].value;
+    }
     while (i < n && law[i].time <= elapsed) {
         i++;
     }
-    if (i == 0) return move->from;
+    if (i == 0) return before;
     if (i == n) return law[n - 1].value;
     const double share = (elapsed - law[i - 1].time) / (law[i].time - law[i - 1].time);
     return law[i - 1].value + share * (law[i].value - law[i - 1].value);
@@ -28,14 +35,32 @@ static double by_ramp(const kent_move *move, double elapsed)
     return move->from + (to - move->from) * (elapsed / ramp);
 }
 
-double kent_schedule_value(const kent_schedule *s, const kent_course *course,
-                           double time)
+const kent_course *kent_schedule_course(const kent_schedule *s, kent_event_kind kind,
+                                        int target)
+{
+    for (size_t i = 0; i < s->course_count; i++) {
+        if (s->courses[i].kind == kind && s->courses[i].target == target) {
+            return &s->courses[i];
+        }
+    }
+    return NULL;
+}
+
+const kent_move *kent_schedule_move(const kent_schedule *s, const kent_course *course,
+                                    double time)
 {
     const kent_move *move = &s->moves[course->first];
     for (size_t i = 1; i < course->count; i++) {
         if (s->moves[course->first + i].event->start_time > time) break;
         move = &s->moves[course->first + i];
     }
+    return move;
+}
+
+double kent_schedule_value(const kent_schedule *s, const kent_course *course,
+                           double time)
+{
+    const kent_move *move = kent_schedule_move(s, course, time);
     const double elapsed = time - move->event->start_time;
     if (elapsed < 0.0) return move->from;
     return move->event->law_count > 0 ? by_law(move, elapsed) : by_ramp(move, elapsed);
@@ -43,8 +68,19 @@ double kent_schedule_value(const kent_schedule *s, const kent_course *course,
 
 static double steady_value(const kent_model *m, const kent_course *c)
 {
-    return c->kind == KENT_EVENT_VALVE ? m->valves[c->target].opening
-                                       : m->outflows[c->target].flow;
+    switch (c->kind) {
+    case KENT_EVENT_VALVE:
+        return m->valves[c->target].opening;
+    case KENT_EVENT_OUTFLOW:
+        return m->outflows[c->target].flow;
+    case KENT_EVENT_FIXED_LEVEL:
+        return m->fixed_levels[c->target].level;
+    case KENT_EVENT_PUMP: /* share of its rated speed */
+        return 1.0;
+    case KENT_EVENT_BURST:
+        break; /* no hole yet */
+    }
+    return 0.0;
 }
 
 /* The events of one target, in order of start; equal starts keep the case's order. */
@@ -77,16 +113,6 @@ static void add_course(const kent_model *m, const kent_scenario *of,
     c->count = count;
 }
 
-static bool has_course(const kent_schedule *s, const kent_event *e)
-{
-    for (size_t i = 0; i < s->course_count; i++) {
-        if (s->courses[i].kind == e->kind && s->courses[i].target == e->target) {
-            return true;
-        }
-    }
-    return false;
-}
-
 kent_status kent_schedule_new(const kent_model *m, int scenario, kent_schedule **out,
                               kent_error *err)
 {
@@ -104,7 +130,8 @@ kent_status kent_schedule_new(const kent_model *m, int scenario, kent_schedule *
     }
     for (size_t i = 0; i < of->event_count; i++) {
         const kent_event *e = &m->events[of->event_first + i];
-        if (!has_course(s, e)) add_course(m, of, e, s, &used);
+        if (!kent_schedule_course(s, e->kind, e->target))
+            add_course(m, of, e, s, &used);
     }
     *out = s;
     return KENT_OK;

@@ -114,6 +114,44 @@ static void without_a_scenario_nothing_happens(void **state)
     plan_clear(&p);
 }
 
+/* A tide of 12 s: its law begins again, and what stands before its first point is then
+ * the end of the turn before. */
+static void a_law_with_a_period_begins_again(void **state)
+{
+    (void)state;
+    static const kent_law_point law[] = {{1.0, 52.0}, {7.0, 46.0}, {11.0, 50.0}};
+    plan p = plan_new();
+    const int e = kent_build_law(&p.build, 0, KENT_EVENT_FIXED_LEVEL, 0, 2.0, law, 3);
+    p.build.model->events[e].period = 12.0;
+    plan_ready(&p);
+    assert_close(value(&p, 0, 0.0), 50.0, 1e-15);
+    assert_close(value(&p, 0, 2.5), 50.0, 1e-15); /* the level it stands at */
+    for (int turn = 0; turn < 3; turn++) {
+        const double start = 2.0 + 12.0 * turn; /* s */
+        assert_close(value(&p, 0, start + 1.0), 52.0, 1e-12);
+        assert_close(value(&p, 0, start + 5.0), 48.0, 1e-12);
+        assert_close(value(&p, 0, start + 9.0), 48.0, 1e-12);
+        assert_close(value(&p, 0, start + 11.5), 50.0, 1e-12);
+        if (turn > 0) assert_close(value(&p, 0, start + 0.5), 50.0, 1e-12);
+    }
+    plan_clear(&p);
+}
+
+static void what_no_event_touches_has_no_course(void **state)
+{
+    (void)state;
+    plan p = plan_new();
+    kent_build_ramp(&p.build, 0, KENT_EVENT_BURST, 0, 2.0, 1.0, 0.003);
+    plan_ready(&p);
+    const kent_course *hole = kent_schedule_course(p.schedule, KENT_EVENT_BURST, 0);
+    assert_true(hole == &p.schedule->courses[0]);
+    assert_true(value(&p, 0, 2.0) == 0.0); /* whole until then */
+    assert_close(value(&p, 0, 2.5), 0.0015, 1e-13);
+    assert_null(kent_schedule_course(p.schedule, KENT_EVENT_BURST, 1));
+    assert_null(kent_schedule_course(p.schedule, KENT_EVENT_VALVE, 0));
+    plan_clear(&p);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -121,6 +159,8 @@ int main(void)
         cmocka_unit_test(a_later_event_takes_over_from_what_was_reached),
         cmocka_unit_test(a_law_is_followed_point_by_point),
         cmocka_unit_test(an_event_without_ramp_acts_at_once),
+        cmocka_unit_test(a_law_with_a_period_begins_again),
+        cmocka_unit_test(what_no_event_touches_has_no_course),
         cmocka_unit_test(without_a_scenario_nothing_happens),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
