@@ -127,3 +127,44 @@ double kent_pow(double x, double y)
     const pair main_part = product_of(y, ln.high);
     return exp_pair((pair){main_part.high, main_part.low + y * ln.low});
 }
+
+/* atan(k/8) as high + low. */
+static const pair ATAN_EIGHTHS[9] = {{0.0, 0.0},
+                                     {0x1.fd5ba9aac2f6ep-4, -0x1.cd37686760c17p-59},
+                                     {0x1.f5b75f92c80ddp-3, 0x1.8ab6e3cf7afbdp-57},
+                                     {0x1.6f61941e4def1p-2, -0x1.c63aae6f6e918p-56},
+                                     {0x1.dac670561bb4fp-2, 0x1.a2b7f222f65e2p-56},
+                                     {0x1.1e00babdefeb4p-1, -0x1.928df287a668fp-58},
+                                     {0x1.4978fa3269ee1p-1, 0x1.2419a87f2a458p-56},
+                                     {0x1.700a7c5784634p-1, -0x1.8c34d25aadef6p-56},
+                                     {0x1.921fb54442d18p-1, 0x1.1a62633145c07p-55}};
+static const pair HALF_PI = {0x1.921fb54442d18p+0, 0x1.1a62633145c07p-54};
+static const pair PI = {0x1.921fb54442d18p+1, 0x1.1a62633145c07p-53};
+
+/* Angle of (x, y) with 0 <= y <= x, x > 0: from that of the nearest eighth k/8 of y/x,
+ * tan(angle - atan(k/8)) = (y - x k/8)/(x + y k/8), at most 1/16. */
+static inline pair angle_of(double y, double x)
+{
+    const int k = (int)(8.0 * (y / x) + 0.5);
+    const double eighths = 0.125 * k;
+    const double r = (y - x * eighths) / (x + y * eighths);
+    const double z = r * r, z2 = z * z;
+    /* Taylor to r^13/13; the first term left out is below 2^-59 of r. */
+    const double a = -1.0 / 3.0 + z * (1.0 / 5.0);
+    const double b = -1.0 / 7.0 + z * (1.0 / 9.0);
+    const double c = -1.0 / 11.0 + z * (1.0 / 13.0);
+    const double tail = r * (z * (a + z2 * (b + z2 * c)));
+    return (pair){ATAN_EIGHTHS[k].high, ATAN_EIGHTHS[k].low + tail + r};
+}
+
+double kent_atan2(double y, double x)
+{
+    const double ay = fabs(y), ax = fabs(x);
+    if (ax == 0.0 && ay == 0.0) return 0.0;
+    pair angle = ay <= ax ? angle_of(ay, ax) : angle_of(ax, ay);
+    if (ay > ax) {
+        angle = (pair){HALF_PI.high - angle.high, HALF_PI.low - angle.low};
+    }
+    if (x < 0.0) angle = (pair){PI.high - angle.high, PI.low - angle.low};
+    return copysign(angle.high + angle.low, y);
+}

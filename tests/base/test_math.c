@@ -85,6 +85,35 @@ static void powers_add_up(void **state)
     assert_true(kent_pow(1.0, 123.4) == 1.0);
 }
 
+static void angles_are_within_two_last_places(void **state)
+{
+    (void)state;
+    uint64_t seed = 11;
+    for (int i = 0; i < TRIALS; i++) {
+        const double size = random_argument(&seed, 4 * i + 1);
+        const double y = (random_fraction(&seed) < 0.5 ? -1.0 : 1.0) * size;
+        const double x = (random_fraction(&seed) < 0.5 ? -1.0 : 1.0) *
+                         (i % 2 == 0 ? 1.0 : size * random_argument(&seed, 1));
+        const double want = atan2(y, x); /* itself within one */
+        assert_within(kent_atan2(y, x), want, 2.0 * last_place(want));
+    }
+}
+
+static void angles_of_the_axes_are_exact(void **state)
+{
+    (void)state;
+    const double pi = acos(-1.0);
+    assert_true(kent_atan2(0.0, 0.0) == 0.0);
+    assert_true(kent_atan2(-0.0, -0.0) == 0.0);
+    assert_true(kent_atan2(0.0, 3.0) == 0.0);
+    assert_true(kent_atan2(2.0, 0.0) == 0.5 * pi);
+    assert_true(kent_atan2(-2.0, 0.0) == -0.5 * pi);
+    assert_true(kent_atan2(0.0, -1.0) == pi);
+    assert_true(kent_atan2(-0.0, -1.0) == -pi);
+    assert_true(kent_atan2(7.0, 7.0) == 0.25 * pi);
+    assert_true(kent_atan2(7.0, -7.0) == 0.75 * pi);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -93,6 +122,8 @@ int main(void)
         cmocka_unit_test(odd_arguments_go_to_the_library),
         cmocka_unit_test(powers_are_within_1e_14),
         cmocka_unit_test(powers_add_up),
+        cmocka_unit_test(angles_are_within_two_last_places),
+        cmocka_unit_test(angles_of_the_axes_are_exact),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
