@@ -1,4 +1,4 @@
-#include "kent_ends_internal.h"
+#include "kent_stands_internal.h"
 
 #include <math.h>
 #include <stdlib.h>
@@ -144,6 +144,23 @@ static void solve_valve(const kent_ends *e, const kent_run *run, kent_line line)
     }
 }
 
+static void solve_cluster(const kent_ends *e, const kent_run *run, kent_line line)
+{
+    const kent_knot *first = e->knots + run->first;
+    for (size_t i = 0; i < e->stands->cluster_count; i++) {
+        const kent_cluster *c = &e->stands->clusters[i];
+        for (size_t n = 0; n < c->node_count; n++) {
+            c->nodes[n].c =
+                arriving(e->tips + first[n].tip_first, first[n].tip_count, line);
+        }
+        kent_stands_solve(e->stands, i);
+        for (size_t n = 0; n < c->node_count; n++, first++) {
+            send_back(e->tips + first->tip_first, first->tip_count, c->nodes[n].head,
+                      line);
+        }
+    }
+}
+
 /* In the order of kent_end_kind. */
 static const struct {
     void (*solve)(const kent_ends *e, const kent_run *run, kent_line line);
@@ -155,6 +172,7 @@ static const struct {
     [KENT_END_OUTFLOW] = {solve_outflow, true},
     [KENT_END_DISCHARGE] = {solve_discharge, true},
     [KENT_END_VALVE] = {solve_valve, false},
+    [KENT_END_CLUSTER] = {solve_cluster, false},
 };
 
 void kent_ends_solve(const kent_ends *e, kent_waves *w)
@@ -223,6 +241,7 @@ static void add_alike(kent_ends *e, const kent_model *m, const kent_waves *w,
     for (size_t i = 0; i < m->node_count; i++) {
         const kent_node *node = &m->nodes[i];
         if (node->end_count == 0 || kind_of(m, node) != kind) continue;
+        if (e->stands->cluster_of[i] >= 0) continue;
         if (node->end_count == tips) add_knot(e, m, w, (int)i);
     }
     close_run(e);
@@ -232,9 +251,24 @@ static void add_valves(kent_ends *e, const kent_model *m, const kent_waves *w)
 {
     open_run(e, KENT_END_VALVE, 0);
     for (size_t i = 0; i < m->valve_count; i++) {
-        if (m->valves[i].node[1] < 0) continue;
-        add_knot(e, m, w, m->valves[i].node[0]);
-        add_knot(e, m, w, m->valves[i].node[1]);
+        const int *node = m->valves[i].node;
+        if (node[1] < 0 || e->stands->cluster_of[node[0]] >= 0) continue;
+        add_knot(e, m, w, node[0]);
+        add_knot(e, m, w, node[1]);
+    }
+    close_run(e);
+}
+
+static void add_clusters(kent_ends *e, const kent_model *m, const kent_waves *w)
+{
+    const int *node = e->stands->nodes;
+    open_run(e, KENT_END_CLUSTER, 0);
+    for (size_t i = 0; i < e->stands->cluster_count; i++) {
+        const kent_cluster *c = &e->stands->clusters[i];
+        for (size_t n = 0; n < c->node_count; n++) {
+            add_knot(e, m, w, *node++);
+            c->nodes[n].y = e->knots[e->knot_count - 1].admittance;
+        }
     }
     close_run(e);
 }
@@ -281,7 +315,8 @@ static void describe_devices(kent_ends *e, const kent_model *m, const kent_stead
 }
 
 kent_status kent_ends_new(const kent_model *m, const kent_steady *s,
-                          const kent_waves *w, kent_ends **out, kent_error *err)
+                          const kent_waves *w, int scenario, kent_ends **out,
+                          kent_error *err)
 {
     kent_status status = KENT_E_NOMEM;
     size_t most = 1; /* tips of one node */
@@ -300,6 +335,9 @@ kent_status kent_ends_new(const kent_model *m, const kent_steady *s,
     if (!e->tips || !e->knots || !e->runs || !e->levels || !e->draws || !e->gates) {
         goto done;
     }
+    describe_devices(e, m, s);
+    status = kent_stands_new(m, s, scenario, e, &e->stands, err);
+    if (status != KENT_OK) goto done;
     for (int kind = 0; kind < KENT_END_KINDS; kind++) {
         if (!KINDS[kind].sorted_by_tips) continue;
         for (size_t tips = 1; tips <= most; tips++) {
@@ -307,13 +345,12 @@ kent_status kent_ends_new(const kent_model *m, const kent_steady *s,
         }
     }
     add_valves(e, m, w);
-    describe_devices(e, m, s);
+    add_clusters(e, m, w);
     *out = e;
     e = NULL;
-    status = KENT_OK;
 done:
     kent_ends_free(e);
-    return status == KENT_OK ? KENT_OK : kent_error_nomem(err);
+    return status == KENT_E_NOMEM ? kent_error_nomem(err) : status;
 }
 
 void kent_ends_free(kent_ends *e)
@@ -325,10 +362,12 @@ void kent_ends_free(kent_ends *e)
     free(e->levels);
     free(e->draws);
     free(e->gates);
+    kent_stands_free(e->stands);
     free(e);
 }
 
-void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time)
+void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time,
+                    double step)
 {
     for (size_t i = 0; i < schedule->course_count; i++) {
         const kent_course *course = &schedule->courses[i];
@@ -348,4 +387,5 @@ void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time)
             break; /* asked by the device itself */
         }
     }
+    kent_stands_move(e->stands, schedule, time, step);
 }

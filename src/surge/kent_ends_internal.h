@@ -21,6 +21,8 @@ typedef enum kent_end_kind {
     KENT_END_OUTFLOW,     /* draws a flow */
     KENT_END_DISCHARGE,   /* a valve into a constant level */
     KENT_END_VALVE,       /* a valve in line: two knots, one after the other */
+    KENT_END_CLUSTER,     /* devices, and all that stands in one place with them: the
+                             clusters' knots, one cluster after the other */
     KENT_END_KINDS
 } kent_end_kind;
 
@@ -60,6 +62,8 @@ typedef struct kent_gate {
     const kent_valve *valve; /* the model's */
 } kent_gate;
 
+typedef struct kent_stands kent_stands; /* kent_stands_internal.h */
+
 typedef struct kent_ends {
     kent_tip *tips;
     kent_knot *knots;
@@ -68,16 +72,21 @@ typedef struct kent_ends {
     kent_level *levels;
     kent_draw *draws;
     kent_gate *gates;
+    kent_stands *stands;
 } kent_ends;
 
+/* scenario: which devices it leaves out; -1: none. */
 kent_status kent_ends_new(const kent_model *m, const kent_steady *s,
-                          const kent_waves *w, kent_ends **out, kent_error *err);
+                          const kent_waves *w, int scenario, kent_ends **out,
+                          kent_error *err);
 void kent_ends_free(kent_ends *e);
 
-/* Sets valves and outflows to what they are at time (s). */
-void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time);
+/* Sets all that stands at nodes to what it is at the end of a step: time, step in s. */
+void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time,
+                    double step);
 
-/* Writes the wave that leaves every end. */
+/* Writes the wave that leaves every end. Whether a device stops the march is in
+ * e->stands->stopped. */
 void kent_ends_solve(const kent_ends *e, kent_waves *w);
 
 /* What stands at a node, alone: tested with six numbers each. C m, Y m2/s; head m. */

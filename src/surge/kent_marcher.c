@@ -1,8 +1,7 @@
 #include "kent_marcher.h"
 
-#include "kent_device_internal.h"
 #include "kent_drag_internal.h"
-#include "kent_ends_internal.h"
+#include "kent_stands_internal.h"
 
 #include <math.h>
 #include <stdlib.h>
@@ -31,6 +30,7 @@ struct kent_marcher {
     kent_eye *eyes;
     size_t eye_count, block;
     double *time, *head, *flow; /* of the trace */
+    kent_device_row *devices;
 };
 
 /* ---- building -------------------------------------------------------------------- */
@@ -73,7 +73,10 @@ static kent_status make_trace(kent_marcher *k, const kent_watch *watches,
     k->time = kent_alloc(block, sizeof *k->time);
     k->head = kent_alloc(block, (watch_count + 1) * sizeof *k->head);
     k->flow = kent_alloc(block, (watch_count + 1) * sizeof *k->flow);
-    if (!k->eyes || !k->time || !k->head || !k->flow) return kent_error_nomem(err);
+    k->devices = kent_alloc(block, (k->model->device_count + 1) * sizeof *k->devices);
+    if (!k->eyes || !k->time || !k->head || !k->flow || !k->devices) {
+        return kent_error_nomem(err);
+    }
     for (size_t i = 0; i < watch_count; i++) {
         const kent_status status =
             look(k->model, k->waves, &watches[i], &k->eyes[i], err);
@@ -124,7 +127,8 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
     if (status == KENT_OK) {
         status = kent_waves_new(m, grid, k->drag->implicit, &k->waves, err);
     }
-    if (status == KENT_OK) status = kent_ends_new(m, s, k->waves, &k->ends, err);
+    if (status == KENT_OK)
+        status = kent_ends_new(m, s, k->waves, scenario, &k->ends, err);
     if (status == KENT_OK) status = kent_schedule_new(m, scenario, &k->schedule, err);
     if (status == KENT_OK) status = make_trace(k, watches, watch_count, block, err);
     if (status != KENT_OK) goto done;
@@ -147,6 +151,7 @@ void kent_marcher_free(kent_marcher *k)
     free(k->time);
     free(k->head);
     free(k->flow);
+    free(k->devices);
     free(k);
 }
 
@@ -203,9 +208,10 @@ static bool advance_once(kent_marcher *k)
         return false;
     }
     k->instant++;
-    kent_ends_move(k->ends, k->schedule, now(k));
+    kent_ends_move(k->ends, k->schedule, now(k), k->step);
     kent_ends_solve(k->ends, k->waves);
-    return true;
+    k->stopped = k->ends->stands->stopped;
+    return k->stopped.status == KENT_OK;
 }
 
 static void record(kent_marcher *k, size_t row)
@@ -225,6 +231,7 @@ static void record(kent_marcher *k, size_t row)
         head[i] = 0.5 * sum;
         flow[i] = gap * eye->flow_per_gap;
     }
+    kent_stands_tell(k->ends->stands, k->devices + row * k->model->device_count);
 }
 
 size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
@@ -237,7 +244,9 @@ size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
         k->started = true;
         record(k, row++);
     }
-    *trace = (kent_trace){row, k->eye_count, 0, k->time, k->head, k->flow, NULL};
+    *trace =
+        (kent_trace){row,     k->eye_count, k->model->device_count, k->time, k->head,
+                     k->flow, k->devices};
     if (row < count) {
         (void)kent_error_set(err, k->stopped.status, k->stopped.where, "%s",
                              k->stopped.what);
