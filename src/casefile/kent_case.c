@@ -48,7 +48,7 @@ bool kent_fill_group(kent_filling *f, const kent_record *parent, const char *key
 
 /* ---- lists ----------------------------------------------------------------------- */
 
-enum { NO_SHELF = -1 };
+enum { NO_SHELF = -1, NO_DEVICE = -1 };
 
 /* In this order: what a list refers to stands before it. */
 static const struct {
@@ -57,11 +57,17 @@ static const struct {
     kent_fill_one *fill;
     int shelf;
     const char *name; /* key that names an element on the shelf */
+    int device;       /* kent_device_kind */
 } LISTS[] = {
 #define LIST(list, group, type, array, count, fill, shelf, name)                       \
     {                                                                                  \
         list, group, sizeof(type), offsetof(kent_model, array),                        \
-            offsetof(kent_model, count), fill, shelf, name                             \
+            offsetof(kent_model, count), fill, shelf, name, NO_DEVICE                  \
+    }
+#define DEVICES(list, group, type, array, count, fill, kind)                           \
+    {                                                                                  \
+        list, group, sizeof(type), offsetof(kent_model, array),                        \
+            offsetof(kent_model, count), fill, KENT_SHELF_DEVICES, "id", kind          \
     }
     LIST("soils", "soil", kent_soil, soils, soil_count, kent_fill_soil,
          KENT_SHELF_SOILS, "id"),
@@ -75,6 +81,23 @@ static const struct {
          kent_fill_outflow, KENT_SHELF_OUTFLOWS, "at"),
     LIST("valves", "valve", kent_valve, valves, valve_count, kent_fill_valve,
          KENT_SHELF_VALVES, "id"),
+    DEVICES("pumps", "pump", kent_pump, pumps, pump_count, kent_fill_pump,
+            KENT_DEVICE_PUMP),
+    DEVICES("check_valves", "check_valve", kent_check_valve, check_valves,
+            check_valve_count, kent_fill_check_valve, KENT_DEVICE_CHECK_VALVE),
+    DEVICES("control_valves", "control_valve", kent_control_valve, control_valves,
+            control_valve_count, kent_fill_control_valve, KENT_DEVICE_CONTROL_VALVE),
+    DEVICES("surge_tanks", "surge_tank", kent_surge_tank, surge_tanks, surge_tank_count,
+            kent_fill_surge_tank, KENT_DEVICE_SURGE_TANK),
+    DEVICES("one_way_surge_tanks", "one_way_surge_tank", kent_one_way_tank,
+            one_way_tanks, one_way_tank_count, kent_fill_one_way_tank,
+            KENT_DEVICE_ONE_WAY_TANK),
+    DEVICES("air_vessels", "air_vessel", kent_air_vessel, air_vessels, air_vessel_count,
+            kent_fill_air_vessel, KENT_DEVICE_AIR_VESSEL),
+    DEVICES("relief_valves", "relief_valve", kent_relief_valve, relief_valves,
+            relief_valve_count, kent_fill_relief_valve, KENT_DEVICE_RELIEF_VALVE),
+    DEVICES("air_valves", "air_valve", kent_air_valve, air_valves, air_valve_count,
+            kent_fill_air_valve, KENT_DEVICE_AIR_VALVE),
     LIST("states", "state", kent_state, states, state_count, kent_fill_state,
          KENT_SHELF_STATES, "id"),
     LIST("scenarios", "scenario", kent_scenario, scenarios, scenario_count,
@@ -84,7 +107,10 @@ static const struct {
     LIST("fittings", "fitting", kent_fitting_note, notes, note_count, kent_fill_fitting,
          KENT_SHELF_FITTINGS, NULL),
 #undef LIST
+#undef DEVICES
 };
+
+enum { LISTS_COUNT = sizeof LISTS / sizeof LISTS[0] };
 
 /* The table whose rows come after a list, or NULL. */
 static kent_rows *table_of(const kent_filling *f, size_t which)
@@ -101,11 +127,37 @@ static void fill_one(kent_filling *f, size_t which, const kent_twig *twig,
     kent_record record;
     kent_record_read(r, twig, LISTS[which].group, "", position, &record);
     LISTS[which].fill(f, &record, index);
-    if (LISTS[which].name) {
-        kent_reader_shelve(r, (kent_shelf)LISTS[which].shelf,
-                           kent_record_field(&record, LISTS[which].name)->text,
-                           (int)index, record.place);
+    if (!LISTS[which].name || LISTS[which].shelf == KENT_SHELF_SCENARIOS) return;
+    const int first = LISTS[which].device == NO_DEVICE
+                          ? 0
+                          : LISTS[which].device * KENT_DEVICES_OF_A_KIND;
+    kent_reader_shelve(r, (kent_shelf)LISTS[which].shelf,
+                       kent_record_field(&record, LISTS[which].name)->text,
+                       first + (int)index, record.place);
+}
+
+/* Scenarios refer to each other: their names stand on the shelf before any is read. */
+static void shelve_scenarios(kent_filling *f, const kent_twig *list)
+{
+    kent_reader *r = &f->reader;
+    const size_t count = list ? kent_twig_count(list) : 0;
+    for (size_t i = 0; i < count; i++) {
+        const kent_twig *one = kent_twig_child(list, i);
+        const kent_twig *id = kent_twig_member(one, "id");
+        kent_reader_shelve(r, KENT_SHELF_SCENARIOS, id ? kent_twig_text(id) : NULL,
+                           (int)i, kent_tree_place(r->tree, one));
     }
+    kent_reader_close_shelf(r, KENT_SHELF_SCENARIOS);
+}
+
+/* Once the last list that stands on it is read. */
+static void close_shelf(kent_reader *r, size_t which)
+{
+    const int shelf = LISTS[which].shelf;
+    const bool last = which + 1 == LISTS_COUNT || LISTS[which + 1].shelf != shelf;
+    if (shelf == NO_SHELF || shelf == KENT_SHELF_SCENARIOS || !last) return;
+    kent_reader_close_shelf(r, (kent_shelf)shelf);
+    if (shelf == KENT_SHELF_DEVICES) kent_reader_close_shelf(r, KENT_SHELF_PUMPS);
 }
 
 static void fill_list(kent_filling *f, size_t which)
@@ -125,6 +177,7 @@ static void fill_list(kent_filling *f, size_t which)
     }
     memcpy((char *)f->model + LISTS[which].array, &array, sizeof array);
     memcpy((char *)f->model + LISTS[which].count, &count, sizeof count);
+    if (LISTS[which].shelf == KENT_SHELF_SCENARIOS) shelve_scenarios(f, list);
     for (size_t i = 0; i < listed && !r->failed; i++) {
         const kent_twig *twig = kent_record_element(r, list, "", i);
         if (twig) fill_one(f, which, twig, i + 1, i);
@@ -137,9 +190,7 @@ static void fill_list(kent_filling *f, size_t which)
             r->failed = true;
         }
     }
-    if (LISTS[which].shelf != NO_SHELF) {
-        kent_reader_close_shelf(r, (kent_shelf)LISTS[which].shelf);
-    }
+    close_shelf(r, which);
 }
 
 /* ---- all ------------------------------------------------------------------------- */
@@ -170,7 +221,7 @@ static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
     kent_fill_site(f);
     const kent_status status = kent_fill_tables(f, err);
     if (status != KENT_OK) return status; /* its rows are not to be had */
-    for (size_t i = 0; i < sizeof LISTS / sizeof LISTS[0] && !r->failed; i++) {
+    for (size_t i = 0; i < LISTS_COUNT && !r->failed; i++) {
         fill_list(f, i);
     }
     if (r->failed) return KENT_E_NOMEM;

@@ -19,6 +19,7 @@ typedef struct kent_filling {
     size_t port_capacity;
     size_t level_capacity, scenario_state_capacity;
     size_t creep_capacity, obstacle_capacity, together_capacity;
+    size_t running_capacity, without_capacity, burst_capacity;
     const kent_material *creeping; /* whose elements stand in the model ... */
     size_t creep_first;            /* ... from here on */
     bool knows_temperature;        /* of the water: the case gives it */
@@ -49,8 +50,10 @@ void kent_fill_solver(kent_filling *f);
  */
 typedef void kent_fill_one(kent_filling *f, kent_record *record, size_t index);
 kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_outflow,
-    kent_fill_valve, kent_fill_state, kent_fill_scenario, kent_fill_soil,
-    kent_fill_ground_zone, kent_fill_fitting;
+    kent_fill_valve, kent_fill_pump, kent_fill_check_valve, kent_fill_control_valve,
+    kent_fill_surge_tank, kent_fill_one_way_tank, kent_fill_air_vessel,
+    kent_fill_relief_valve, kent_fill_air_valve, kent_fill_state, kent_fill_scenario,
+    kent_fill_soil, kent_fill_ground_zone, kent_fill_fitting;
 
 /* Of a pipe: its ratings, de-rated where its material is a warm plastic, and the
  * standard that they are by. row, material: NULL where none is named. */
@@ -58,6 +61,15 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
                        const kent_material *material, kent_pipe *p);
 void kent_fill_standard(kent_filling *f, kent_record *record,
                         const kent_pipe_class *row, kent_pipe *p);
+
+/* m^2.5/s at full opening, by the one that is given of loss, kv and cv; NAN after a
+ * complaint where none or more are. */
+double kent_fill_capacity(kent_filling *f, kent_record *record, double size);
+
+/* An index on KENT_SHELF_DEVICES: the kind, and which of it. */
+enum { KENT_DEVICES_OF_A_KIND = 1 << 26 };
+
+void kent_fill_event(kent_filling *f, kent_record *record, const kent_scenario *s);
 
 /* The states that a scenario names; without a list it starts from every one. */
 void kent_fill_scenario_states(kent_filling *f, kent_record *record, kent_scenario *s);
@@ -73,6 +85,15 @@ void kent_fill_show(const kent_filling *f, double si, kent_kind kind, char *out,
 /* Notes what nobody gave: "what\tvalue\twhy". */
 void kent_fill_assume(kent_filling *f, const char *what, const char *value,
                       const char *why);
+
+/* Of one device and its key; then, what a key gives, else the usual value, noted as
+ * assumed ("none" where it is not finite). */
+void kent_fill_assume_of(kent_filling *f, const kent_record *record,
+                         kent_device_kind kind, const char *key, const char *value,
+                         const char *why);
+double kent_fill_usual(kent_filling *f, const kent_record *record,
+                       kent_device_kind kind, const char *key, double usual,
+                       const char *why);
 
 /* The same, with a value to be displayed. */
 void kent_fill_assume_value(kent_filling *f, const char *what, double si,

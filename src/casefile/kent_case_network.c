@@ -121,22 +121,51 @@ static void fill_curve(kent_filling *f, kent_record *record, kent_valve *v)
     }
 }
 
+static const char *const CAPACITY_KEYS[] = {"loss", "kv", "cv", "flow"};
+
+/* The first of the keys that is given, NULL: none; complains where two are. */
+static const char *given_capacity(kent_filling *f, kent_record *record, size_t count)
+{
+    const char *first = NULL;
+    for (size_t i = 0; i < count; i++) {
+        if (!kent_record_has(record, CAPACITY_KEYS[i])) continue;
+        if (first) {
+            kent_record_complain(&f->reader, record, CAPACITY_KEYS[i],
+                                 "%s and %s are both given; keep one", first,
+                                 CAPACITY_KEYS[i]);
+            return first;
+        }
+        first = CAPACITY_KEYS[i];
+    }
+    return first;
+}
+
+/* m^2.5/s by a key; NAN where it gives none. */
+static double capacity_by(const kent_filling *f, const kent_record *record,
+                          const char *key, double size)
+{
+    const double g = f->model->gravity;
+    const double value = kent_record_number(record, key);
+    return strcmp(key, "kv") == 0     ? kent_valve_capacity_from_kv(value, g)
+           : strcmp(key, "cv") == 0   ? kent_valve_capacity_from_cv(value, g)
+           : strcmp(key, "loss") == 0 ? kent_valve_capacity_from_loss(value, size, g)
+                                      : NAN;
+}
+
+double kent_fill_capacity(kent_filling *f, kent_record *record, double size)
+{
+    const char *given = given_capacity(f, record, 3);
+    if (!record->sound) return NAN;
+    if (given) return capacity_by(f, record, given, size);
+    kent_record_complain(&f->reader, record, NULL,
+                         "what it passes is not known; give loss, kv or cv");
+    return NAN;
+}
+
 /* One of loss, kv, cv and flow; else the type's loss. */
 static void fill_capacity(kent_filling *f, kent_record *record, kent_valve *v)
 {
-    static const char *const KEYS[] = {"loss", "kv", "cv", "flow"};
-    const double g = f->model->gravity;
-    const char *first = NULL;
-    for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
-        if (!kent_record_has(record, KEYS[i])) continue;
-        if (first) {
-            kent_record_complain(&f->reader, record, KEYS[i],
-                                 "%s and %s are both given; keep one", first, KEYS[i]);
-            return;
-        }
-        first = KEYS[i];
-    }
-    double loss = kent_record_number(record, "loss");
+    const char *first = given_capacity(f, record, 4);
     v->capacity = NAN;
     v->flow = kent_record_number(record, "flow");
     if (!record->sound) return;
@@ -149,17 +178,14 @@ static void fill_capacity(kent_filling *f, kent_record *record, kent_valve *v)
             return;
         }
         char what[96];
-        loss = row->loss;
         (void)snprintf(what, sizeof what, "loss of %s valves, fully open", row->id);
-        kent_fill_assume_value(f, what, loss, KENT_RATIO, row->from.source);
+        kent_fill_assume_value(f, what, row->loss, KENT_RATIO, row->from.source);
+        v->capacity =
+            kent_valve_capacity_from_loss(row->loss, v->size, f->model->gravity);
+        return;
     }
-    if (kent_record_has(record, "kv")) {
-        v->capacity = kent_valve_capacity_from_kv(kent_record_number(record, "kv"), g);
-    } else if (kent_record_has(record, "cv")) {
-        v->capacity = kent_valve_capacity_from_cv(kent_record_number(record, "cv"), g);
-    } else if (!isnan(loss)) {
-        v->capacity = kent_valve_capacity_from_loss(loss, v->size, g);
-    } else if (v->opening <= 0.0) {
+    v->capacity = capacity_by(f, record, first, v->size);
+    if (isnan(v->capacity) && v->opening <= 0.0) {
         kent_record_complain(
             &f->reader, record, "flow",
             "a valve that is closed in the steady state passes no flow; "

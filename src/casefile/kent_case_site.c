@@ -103,6 +103,11 @@ void kent_fill_solver(kent_filling *f)
     if (kent_record_has(&r, "friction")) {
         s->friction = (kent_surge_friction)kent_record_field(&r, "friction")->index;
     }
+    if (kent_record_has(&r, "column_separation")) {
+        s->column_separation =
+            (kent_separation)kent_record_field(&r, "column_separation")->index;
+    }
+    s->creep = kent_record_switch(&r, "creep", s->creep);
     s->grid_check = kent_record_switch(&r, "grid_check", s->grid_check);
     s->wave_speed_tolerance =
         kent_record_number_or(&r, "wave_speed_tolerance", s->wave_speed_tolerance);

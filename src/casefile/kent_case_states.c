@@ -56,19 +56,67 @@ static void fill_level(kent_filling *f, kent_record *record, const kent_twig *pa
     s->level_count++;
 }
 
+/* The pair ( "PS", 1 ): which pump, and how many of its units run. */
+static void fill_running(kent_filling *f, kent_record *record, const kent_twig *pair,
+                         kent_state *s)
+{
+    kent_model *m = f->model;
+    kent_reader *r = &f->reader;
+    const bool whole = kent_twig_type_of(pair) == KENT_TWIG_LIST &&
+                       kent_twig_count(pair) == 2 &&
+                       kent_twig_type_of(kent_twig_child(pair, 1)) == KENT_TWIG_WHOLE;
+    if (!whole) {
+        kent_record_complain(r, record, "running",
+                             "element %zu of running must be a pair, as ( \"PS\", 1 )",
+                             s->running_count + 1);
+        return;
+    }
+    const kent_twig *name = kent_twig_child(pair, 0);
+    const int pump = kent_record_lookup(r, record, name, "running", KENT_SHELF_PUMPS);
+    const double units = kent_twig_number(kent_twig_child(pair, 1));
+    if (pump < 0) return;
+    if (units < 0.0 || units > m->pumps[pump].in_parallel) {
+        kent_record_complain(r, record, "running",
+                             "running: %.9g of \"%s\" is out of range; it has %d "
+                             "in_parallel",
+                             units, m->pumps[pump].id, m->pumps[pump].in_parallel);
+        return;
+    }
+    for (size_t i = 0; i < s->running_count; i++) {
+        if (m->state_running[s->running_first + i].pump != pump) continue;
+        kent_record_complain(r, record, "running",
+                             "running names \"%.60s\" twice; keep one",
+                             kent_twig_text(name));
+        return;
+    }
+    if (kent_grow((void **)&m->state_running, &f->running_capacity,
+                  m->state_running_count + 1, sizeof *m->state_running) != 0) {
+        r->failed = true;
+        return;
+    }
+    m->state_running[m->state_running_count++] = (kent_state_running){pump, (int)units};
+    s->running_count++;
+}
+
 void kent_fill_state(kent_filling *f, kent_record *record, size_t index)
 {
     kent_state *s = &f->model->states[index];
     const kent_twig *levels = kent_record_field(record, "levels")->twig;
+    const kent_twig *running = kent_record_field(record, "running")->twig;
     const size_t count = levels ? kent_twig_count(levels) : 0;
+    const size_t units = running ? kent_twig_count(running) : 0;
     *s = (kent_state){
         .level_first = f->model->state_level_count,
+        .running_first = f->model->state_running_count,
         .outflow_factor = kent_record_number_or(record, "outflow_factor", 1.0),
         .roughness_factor = kent_record_number_or(record, "roughness_factor", 1.0),
         .place = record->place};
     kent_record_copy(record, "id", NULL, s->id, sizeof s->id);
     for (size_t i = 0; i < count && !f->reader.failed; i++) {
         fill_level(f, record, kent_twig_child(levels, i), s);
+    }
+    for (size_t i = 0; i < units && !f->reader.failed; i++) {
+        fill_running(f, record, kent_twig_child(running, i), s);
     }
 }
 
@@ -82,7 +130,7 @@ void kent_fill_scenario_states(kent_filling *f, kent_record *record, kent_scenar
     if (!kent_record_has(record, "states")) {
         char all[40];
         (void)snprintf(all, sizeof all, "all %zu", m->state_count);
-        if (m->state_count > 1) {
+        if (m->state_count > 1 && !kent_record_has(record, "same_as")) {
             kent_fill_assume(f, "states of scenarios that name none", all, "not given");
         }
         return;

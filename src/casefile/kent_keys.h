@@ -15,7 +15,7 @@ typedef enum kent_value {
     KENT_VALUE_TEXT,
     KENT_VALUE_ID,   /* the name of a thing defined by this key */
     KENT_VALUE_REF,  /* the id of a thing defined elsewhere; `words`: its group */
-    KENT_VALUE_WORD, /* one of `words`, separated by '|'; "~word" is for later */
+    KENT_VALUE_WORD, /* one of `words`, separated by '|' */
     KENT_VALUE_LIST, /* a list of groups (named in `words`) or of values */
     KENT_VALUE_GROUP,
     KENT_VALUE_STATION, /* "1+198": a length along the main */
@@ -34,8 +34,8 @@ typedef struct kent_key {
     const char *words;    /* see kent_value; of a quantity: a word that may stand for
                              "none" (read as INFINITY) */
     const char *fallback; /* what holds when it is left out; "required"; "none" */
-    const char *since; /* "0.1"; "later": named in the format but not in this version */
-    const char *says;  /* one line for the manual */
+    const char *since;    /* "0.1" */
+    const char *says;     /* one line for the manual */
 } kent_key;
 
 /* Keys of one group stand together, groups of a case before those of the catalogue. */
@@ -46,9 +46,6 @@ const kent_key *kent_key_find(const char *group, const char *key);
 
 /* The keys of a group, [*count], or NULL. */
 const kent_key *kent_key_group(const char *group, size_t *count);
-
-/* Whether the key is of this version. */
-bool kent_key_is_now(const kent_key *key);
 
 /* Whether leaving it out is an error. */
 bool kent_key_is_required(const kent_key *key);

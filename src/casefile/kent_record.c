@@ -16,6 +16,8 @@ static const struct {
     [KENT_SHELF_POINTS] = {"point", "point"},
     [KENT_SHELF_SOILS] = {"soil", "soil"},
     [KENT_SHELF_VALVES] = {"valve", "valve"},
+    [KENT_SHELF_PUMPS] = {"pump", "pump"},
+    [KENT_SHELF_DEVICES] = {"device", "device"},
     [KENT_SHELF_FIXED_LEVELS] = {"fixed_level", "fixed level at"},
     [KENT_SHELF_OUTFLOWS] = {"outflow", "outflow at"},
     [KENT_SHELF_PIPES] = {"pipe", "pipe"},
@@ -279,6 +281,8 @@ static const char *where_to_look(const kent_reader *r, kent_shelf shelf)
     case KENT_SHELF_POINTS:
     case KENT_SHELF_FIXED_LEVELS:
     case KENT_SHELF_VALVES:
+    case KENT_SHELF_PUMPS:
+    case KENT_SHELF_DEVICES:
     case KENT_SHELF_OUTFLOWS:
     case KENT_SHELF_PIPES:
     case KENT_SHELF_SCENARIOS:
@@ -333,25 +337,19 @@ static void reference(kent_reader *r, kent_record *record, const kent_key *key,
     f->index = kent_record_lookup(r, record, f->twig, key->key, shelf);
 }
 
-/* Index of a word in "a|b|~c", -1: not there; *later: it carries a "~". */
-static int word_index(const char *words, const char *word, bool *later)
+/* Index of a word in "a|b", -1: not there. */
+static int word_index(const char *words, const char *word)
 {
     int index = 0;
     for (const char *p = words; p; index++) {
         const size_t length = strcspn(p, "|");
-        *later = p[0] == '~';
-        const size_t skip = *later ? 1 : 0;
-        if (strlen(word) == length - skip &&
-            strncmp(p + skip, word, length - skip) == 0) {
-            return index;
-        }
+        if (strlen(word) == length && strncmp(p, word, length) == 0) return index;
         p = p[length] == '|' ? p + length + 1 : NULL;
     }
-    *later = false;
     return -1;
 }
 
-/* The word of this version nearest to a misspelt one, into out; "": none is, or
+/* The word nearest to a misspelt one, into out; "": none is, or
  * several are alike. */
 static void nearest_word(const char *words, const char *word, char *out, size_t size)
 {
@@ -362,8 +360,8 @@ static void nearest_word(const char *words, const char *word, char *out, size_t 
         char candidate[40];
         (void)snprintf(candidate, sizeof candidate, "%.*s", (int)length, p);
         const size_t distance = kent_text_misspelling(candidate, word);
-        if (p[0] != '~' && distance == least) out[0] = '\0';
-        if (p[0] != '~' && distance < least) {
+        if (distance == least) out[0] = '\0';
+        if (distance < least) {
             least = distance;
             (void)snprintf(out, size, "%s", candidate);
         }
@@ -371,19 +369,17 @@ static void nearest_word(const char *words, const char *word, char *out, size_t 
     }
 }
 
-/* "push-on", "mechanical" ... : the words of this version, for people. */
+/* "push-on", "mechanical" ... : the words, for people. */
 static void list_words(const char *words, char *out, size_t size)
 {
     size_t used = 0;
     out[0] = '\0';
     for (const char *p = words; p;) {
         const size_t length = strcspn(p, "|");
-        if (p[0] != '~') {
-            const int n = snprintf(out + used, size - used, "%s\"%.*s\"",
-                                   used > 0 ? ", " : "", (int)length, p);
-            if (n < 0 || (size_t)n >= size - used) return;
-            used += (size_t)n;
-        }
+        const int n = snprintf(out + used, size - used, "%s\"%.*s\"",
+                               used > 0 ? ", " : "", (int)length, p);
+        if (n < 0 || (size_t)n >= size - used) return;
+        used += (size_t)n;
         p = p[length] == '|' ? p + length + 1 : NULL;
     }
 }
@@ -392,7 +388,6 @@ static void word(kent_reader *r, kent_record *record, const kent_key *key,
                  kent_field *f)
 {
     char known[240];
-    bool later = false;
     f->text = kent_twig_text(f->twig);
     list_words(key->words, known, sizeof known);
     if (!f->text) {
@@ -402,11 +397,8 @@ static void word(kent_reader *r, kent_record *record, const kent_key *key,
         return;
     }
     f->text = kent_spelling(f->text);
-    f->index = word_index(key->words, f->text, &later);
-    if (later) {
-        complain(r, record, f->twig, "%s = \"%s\" is not in this version; it knows %s",
-                 key->key, f->text, known);
-    } else if (f->index < 0) {
+    f->index = word_index(key->words, f->text);
+    if (f->index < 0) {
         char near[40];
         nearest_word(key->words, f->text, near, sizeof near);
         if (near[0] != '\0') {
@@ -641,9 +633,7 @@ static void read_member(kent_reader *r, kent_record *record, const char *group,
         return;
     }
     kent_field *f = &record->fields[i];
-    if (!kent_key_is_now(&record->keys[i])) {
-        complain(r, record, twig, "'%s' is not in this version; take it out", name);
-    } else if (f->twig) {
+    if (f->twig) {
         complain(r, record, twig, "'%s' is given twice, spelt two ways; keep one",
                  name);
     } else {

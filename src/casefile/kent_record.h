@@ -15,12 +15,14 @@ typedef enum kent_shelf {
     KENT_SHELF_POINTS,
     KENT_SHELF_SOILS,
     KENT_SHELF_VALVES,
+    KENT_SHELF_PUMPS,
+    KENT_SHELF_DEVICES,      /* pumps too; by kent_device_shelf_index */
     KENT_SHELF_FIXED_LEVELS, /* these two by the id of their point */
     KENT_SHELF_OUTFLOWS,
     KENT_SHELF_PIPES,
     KENT_SHELF_STATES,
-    KENT_SHELF_SCENARIOS, /* these two only so that ids are unique */
-    KENT_SHELF_FITTINGS,
+    KENT_SHELF_SCENARIOS,
+    KENT_SHELF_FITTINGS, /* only so that ids are unique */
     KENT_SHELF_PIPE_CLASSES,
     KENT_SHELF_MATERIALS,
     KENT_SHELF_VALVE_TYPES,

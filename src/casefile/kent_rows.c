@@ -159,12 +159,8 @@ static void read_heading(kent_reader *r, kent_rows *t, int line, size_t index,
                  c->key->key, i + 1, index + 1);
     }
     const kent_value value = c->key->value;
-    if (!kent_key_is_now(c->key)) {
-        /* unreached: every key of a point and of a pipe is of this version */
-        complain(r, t, line, "'%s' is not in this version; take the column out",
-                 c->key->key);
-    } else if ((value == KENT_VALUE_LIST && !is_route(c->key)) ||
-               value == KENT_VALUE_GROUP || value == KENT_VALUE_VECTOR) {
+    if ((value == KENT_VALUE_LIST && !is_route(c->key)) || value == KENT_VALUE_GROUP ||
+        value == KENT_VALUE_VECTOR) {
         complain(r, t, line,
                  "'%s' is a list and cannot stand in a table; what has one is written "
                  "in the case file",

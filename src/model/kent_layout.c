@@ -65,12 +65,13 @@ kent_status kent_layout_make(const kent_model *m, kent_layout *l)
     l->owner = kent_alloc(m->point_count, sizeof *l->owner);
     l->note = kent_alloc(m->point_count, sizeof *l->note);
     l->device = kent_alloc(m->point_count, sizeof *l->device);
+    l->beside = kent_alloc(m->point_count, sizeof *l->beside);
     l->station = kent_alloc(m->point_count, sizeof *l->station);
     l->arm_node = kent_alloc(m->route_count, 2 * sizeof *l->arm_node);
     l->arc = kent_alloc(m->route_count, sizeof *l->arc);
     l->arm_span = kent_alloc(m->route_count, 2 * sizeof *l->arm_span);
     if (!l->first || !l->stop || !l->pipe || !l->owner || !l->note || !l->device ||
-        !l->station || !l->arm_node || !l->arm_span || !l->arc) {
+        !l->beside || !l->station || !l->arm_node || !l->arm_span || !l->arc) {
         return KENT_E_NOMEM; /* the caller clears */
     }
     for (size_t a = 0; a < 2 * m->route_count; a++) {
@@ -89,6 +90,7 @@ void kent_layout_clear(kent_layout *l)
     free(l->owner);
     free(l->note);
     free(l->device);
+    free(l->beside);
     free(l->station);
     free(l->arm_node);
     free(l->arm_span);
@@ -122,7 +124,7 @@ bool kent_layout_is_cut(const kent_model *m, const kent_layout *l, size_t stop)
     const int point = m->route[stop];
     return is_first_stop(m, l, stop) || is_last_stop(m, l, stop) ||
            l->first[point + 1] - l->first[point] > 1 ||
-           l->device[point].kind != KENT_SEAT_FREE;
+           l->device[point].kind != KENT_SEAT_FREE || l->beside[point];
 }
 
 int kent_arm_toward(const kent_model *m, kent_arm arm)
@@ -130,23 +132,27 @@ int kent_arm_toward(const kent_model *m, kent_arm arm)
     return m->route[arm.leaves ? arm.stop + 1 : arm.stop - 1];
 }
 
-/* Stands a device at a point; false, with a complaint, where none or another may. name:
- * "fixed level" or "valve \"V1\"". */
-static bool stand(const kent_model *m, kent_layout *l, kent_seat device, int point,
-                  kent_place place, const char *name, kent_complaints *complaints)
+bool kent_layout_on_route(const kent_model *m, const kent_layout *l, int point,
+                          kent_place place, const char *name,
+                          kent_complaints *complaints)
+{
+    if (l->first[point + 1] > l->first[point]) return true;
+    kent_place_complain(m, place, complaints,
+                        "%s at \"%s\": no pipe runs through this point; name a point "
+                        "of a pipe's route",
+                        name, m->points[point].id);
+    return false;
+}
+
+bool kent_layout_stand(const kent_model *m, kent_layout *l, kent_seat device, int point,
+                       kent_place place, const char *name, kent_complaints *complaints)
 {
     const char *id = m->points[point].id;
-    if (l->first[point + 1] == l->first[point]) {
-        kent_place_complain(m, place, complaints,
-                            "%s at \"%s\": no pipe runs through this point; name a "
-                            "point of a pipe's route",
-                            name, id);
-        return false;
-    }
+    if (!kent_layout_on_route(m, l, point, place, name, complaints)) return false;
     if (l->device[point].kind != KENT_SEAT_FREE) {
         kent_place_complain(m, place, complaints,
-                            "%s at \"%s\": another device stands there; one device per "
-                            "point in this version, so give each a point of its own",
+                            "%s at \"%s\": another device stands there; one stands "
+                            "in line or at an end, so give each a point of its own",
                             name, id);
         return false;
     }
@@ -186,21 +192,22 @@ void kent_layout_place_devices(const kent_model *m, kent_layout *l,
 {
     for (size_t i = 0; i < m->fixed_level_count; i++) {
         const kent_fixed_level *level = &m->fixed_levels[i];
-        (void)stand(m, l, (kent_seat){KENT_SEAT_LEVEL, (int)i}, level->point,
-                    level->place, "fixed level", complaints);
+        (void)kent_layout_stand(m, l, (kent_seat){KENT_SEAT_LEVEL, (int)i},
+                                level->point, level->place, "fixed level", complaints);
     }
     for (size_t i = 0; i < m->outflow_count; i++) {
         const kent_outflow *outflow = &m->outflows[i];
-        (void)stand(m, l, (kent_seat){KENT_SEAT_OUTFLOW, (int)i}, outflow->point,
-                    outflow->place, "outflow", complaints);
+        (void)kent_layout_stand(m, l, (kent_seat){KENT_SEAT_OUTFLOW, (int)i},
+                                outflow->point, outflow->place, "outflow", complaints);
     }
     for (size_t i = 0; i < m->valve_count; i++) {
         const kent_valve *valve = &m->valves[i];
         char name[KENT_ID + 16];
         (void)snprintf(name, sizeof name, "valve \"%s\"", valve->id);
-        if (stand(m, l, (kent_seat){KENT_SEAT_VALVE, (int)i}, valve->point,
-                  valve->place, name, complaints)) {
+        if (kent_layout_stand(m, l, (kent_seat){KENT_SEAT_VALVE, (int)i}, valve->point,
+                              valve->place, name, complaints)) {
             check_valve(m, l, valve, complaints);
         }
     }
+    kent_devices_place(m, l, complaints);
 }

@@ -36,6 +36,7 @@ kent_model *kent_model_new(void)
         m->loads.factor[i] = (double)NAN;
     }
     m->solver = (kent_solver){.friction = KENT_SURGE_QUASI_STEADY,
+                              .column_separation = KENT_SEPARATION_GAS,
                               .grid_check = true,
                               .wave_speed_tolerance = USUAL_SPEED_TOLERANCE,
                               .min_reaches = 20,
@@ -56,6 +57,8 @@ static void clear_derived(kent_model *m)
     free(m->spans);
     free(m->nodes);
     free(m->ends);
+    free(m->devices);
+    free(m->stands);
     free(m->ports);
     free(m->fittings);
     free(m->members);
@@ -67,13 +70,15 @@ static void clear_derived(kent_model *m)
     m->spans = NULL;
     m->nodes = NULL;
     m->ends = NULL;
+    m->devices = NULL;
+    m->stands = NULL;
     m->ports = NULL;
     m->fittings = NULL;
     m->members = NULL;
     m->marches = NULL;
     m->highest_level = NULL;
     m->span_count = m->node_count = m->port_count = m->fitting_count = 0;
-    m->member_count = m->march_count = 0;
+    m->member_count = m->march_count = m->device_count = m->stand_count = 0;
 }
 
 void kent_model_free(kent_model *m)
@@ -90,6 +95,15 @@ void kent_model_free(kent_model *m)
     free(m->fixed_levels);
     free(m->outflows);
     free(m->valves);
+    free(m->pumps);
+    free(m->check_valves);
+    free(m->control_valves);
+    free(m->surge_tanks);
+    free(m->one_way_tanks);
+    free(m->air_vessels);
+    free(m->relief_valves);
+    free(m->air_valves);
+    free(m->bursts);
     free(m->scenarios);
     free(m->events);
     free(m->law);
@@ -99,6 +113,8 @@ void kent_model_free(kent_model *m)
     free(m->creep);
     free(m->states);
     free(m->state_levels);
+    free(m->state_running);
+    free(m->without);
     free(m->scenario_states);
     free(m->ground_zones);
     free(m->obstacles);
@@ -151,6 +167,8 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     status = kent_alignment_lay(m, &layout, complaints);
     if (status != KENT_OK || complaints->count > before) goto done;
+    status = kent_devices_list(m);
+    if (status != KENT_OK) goto done;
     status = kent_route_measure(m, &layout, complaints);
     if (status != KENT_OK) goto done;
     kent_layout_place_devices(m, &layout, complaints);

@@ -278,6 +278,9 @@ typedef struct kent_device {
     const char *id; /* its own; a burst's is its point's */
 } kent_device;
 
+/* Pumps, check and control valves; the others stand beside a point. */
+bool kent_device_in_line(kent_device_kind kind);
+
 typedef enum kent_event_kind {
     KENT_EVENT_VALVE,
     KENT_EVENT_OUTFLOW,

@@ -15,12 +15,13 @@ typedef enum kent_seat_kind {
     KENT_SEAT_FREE,
     KENT_SEAT_LEVEL,
     KENT_SEAT_OUTFLOW,
-    KENT_SEAT_VALVE
+    KENT_SEAT_VALVE,
+    KENT_SEAT_DEVICE /* in line, or a pump that draws from a level */
 } kent_seat_kind;
 
 typedef struct kent_seat {
     kent_seat_kind kind;
-    int index; /* into the model's list of its kind */
+    int index; /* into the model's list of its kind; of a device, into devices */
 } kent_seat;
 
 typedef struct kent_arm {
@@ -38,6 +39,7 @@ typedef struct kent_layout {
                           where there is none */
     int *note;         /* [point_count] what the case says of its fitting; -1 */
     kent_seat *device; /* [point_count] */
+    bool *beside;      /* [point_count] some device stands beside it */
     double *station;   /* [point_count] m; NAN: on no route */
     int *arm_node;     /* [2 route_count] -1: the pipe isn't cut there */
     int *arm_span;     /* [2 route_count] -1: no such arm */
@@ -57,6 +59,14 @@ bool kent_layout_is_cut(const kent_model *m, const kent_layout *l, size_t stop);
 /* Notes which device stands at each point; complains where one cannot. */
 void kent_layout_place_devices(const kent_model *m, kent_layout *l,
                                kent_complaints *complaints);
+/* Whether a pipe runs through a point; then, whether nothing stands there, and the
+ * device takes its place. Each complains where not. name: "fixed level" or "valve
+ * \"V1\"". */
+bool kent_layout_on_route(const kent_model *m, const kent_layout *l, int point,
+                          kent_place place, const char *name,
+                          kent_complaints *complaints);
+bool kent_layout_stand(const kent_model *m, kent_layout *l, kent_seat device, int point,
+                       kent_place place, const char *name, kent_complaints *complaints);
 int kent_arm_toward(const kent_model *m, kent_arm arm); /* the next point that way */
 
 static inline size_t kent_arm_number(kent_arm arm)
@@ -90,6 +100,21 @@ kent_status kent_ground_settle(kent_model *m, const kent_layout *l,
                                kent_complaints *complaints);
 /* The zone of a pipe at a station; -1. */
 int kent_zone_at(const kent_model *m, int pipe, double station);
+
+/* kent_devices.c: devices of every kind in one list; then where each stands, with
+ * complaints where one cannot; the arm that it delivers to or stands beside; then
+ * their nodes, once those are made, and kent_model.stands. */
+kent_status kent_devices_list(kent_model *m);
+void kent_devices_place(const kent_model *m, kent_layout *l,
+                        kent_complaints *complaints);
+kent_arm kent_device_delivery(const kent_model *m, const kent_layout *l,
+                              const kent_device *d);
+void kent_devices_stand(kent_model *m, const kent_layout *l);
+kent_place kent_device_place(const kent_model *m, const kent_device *d);
+
+/* kent_devices_valid.c: as kent_model_is_valid, of devices and what moves them. */
+bool kent_devices_are_valid(const kent_model *m);
+bool kent_event_is_valid(const kent_model *m, const kent_event *e);
 
 /* kent_network.c: spans, nodes, ends; then what no fixed level reaches. */
 kent_status kent_network_cut(kent_model *m, kent_layout *l,

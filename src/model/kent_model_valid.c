@@ -1,4 +1,4 @@
-#include "kent_model.h"
+#include "kent_model_internal.h"
 
 #include <math.h>
 #include <stdlib.h>
@@ -112,6 +112,7 @@ static bool states_are_valid(const kent_model *m)
     for (size_t i = 0; i < m->state_count; i++) {
         const kent_state *s = &m->states[i];
         if (!is_part(s->level_first, s->level_count, m->state_level_count) ||
+            !is_part(s->running_first, s->running_count, m->state_running_count) ||
             !(s->outflow_factor >= 0.0) || !is_positive(s->roughness_factor)) {
             return false;
         }
@@ -137,19 +138,14 @@ static bool scenarios_are_valid(const kent_model *m)
         const kent_scenario *s = &m->scenarios[i];
         if (!is_positive(s->duration) ||
             !is_part(s->event_first, s->event_count, m->event_count) ||
-            !is_part(s->state_first, s->state_count, m->scenario_state_count)) {
+            !is_part(s->state_first, s->state_count, m->scenario_state_count) ||
+            !is_part(s->without_first, s->without_count, m->without_count) ||
+            !is_index_or_none(s->same_as, m->scenario_count)) {
             return false;
         }
     }
     for (size_t i = 0; i < m->event_count; i++) {
-        const kent_event *e = &m->events[i];
-        const size_t targets =
-            e->kind == KENT_EVENT_VALVE ? m->valve_count : m->outflow_count;
-        if (!is_index(e->target, targets) || !(e->start_time >= 0.0) ||
-            !is_part(e->law_first, e->law_count, m->law_count) ||
-            (e->law_count == 0 && !(e->ramp_time >= 0.0 && isfinite(e->to)))) {
-            return false;
-        }
+        if (!kent_event_is_valid(m, &m->events[i])) return false;
     }
     return true;
 }
@@ -251,6 +247,7 @@ bool kent_model_is_valid(const kent_model *m)
            are_indices(m->members, m->member_count, m->point_count) &&
            are_indices(m->together, m->together_count, m->point_count) &&
            ground_is_valid(m) && states_are_valid(m) && pipes_are_valid(m) &&
-           devices_are_valid(m) && scenarios_are_valid(m) && spans_are_valid(m) &&
-           nodes_are_valid(m) && fittings_are_valid(m);
+           devices_are_valid(m) && kent_devices_are_valid(m) &&
+           scenarios_are_valid(m) && spans_are_valid(m) && nodes_are_valid(m) &&
+           fittings_are_valid(m);
 }

@@ -12,16 +12,11 @@ static bool is_first_at_point(const kent_layout *l, const kent_model *m, size_t 
     return l->stop[l->first[m->route[stop]]] == stop;
 }
 
-static bool is_in_line(const kent_model *m, kent_seat device)
-{
-    return device.kind == KENT_SEAT_VALVE &&
-           isnan(m->valves[device.index].discharge_level);
-}
-
 static kent_node_kind node_kind(kent_seat_kind kind)
 {
     switch (kind) {
     case KENT_SEAT_FREE:
+    case KENT_SEAT_DEVICE: /* told by kent_node.stand_first instead */
         return KENT_NODE_JUNCTION;
     case KENT_SEAT_LEVEL:
         return KENT_NODE_FIXED_LEVEL;
@@ -35,10 +30,11 @@ static kent_node_kind node_kind(kent_seat_kind kind)
 
 static int add_node(kent_model *m, int point, kent_seat device)
 {
+    const kent_node_kind kind = node_kind(device.kind);
     m->nodes[m->node_count] =
         (kent_node){.point = point,
-                    .kind = node_kind(device.kind),
-                    .device = device.kind == KENT_SEAT_FREE ? -1 : device.index};
+                    .kind = kind,
+                    .device = kind == KENT_NODE_JUNCTION ? -1 : device.index};
     return (int)m->node_count++;
 }
 
@@ -49,6 +45,37 @@ static void join_arms(kent_layout *l, int point, int node)
         l->arm_node[2 * l->stop[i]] = node;
         l->arm_node[2 * l->stop[i] + 1] = node;
     }
+}
+
+/* A second node of the point, at which one of its arms ends. */
+static int part_arm(kent_model *m, kent_layout *l, int point, kent_arm arm)
+{
+    const int beyond = add_node(m, point, l->device[point]);
+    l->arm_node[kent_arm_number(arm)] = beyond;
+    return beyond;
+}
+
+static void make_nodes_of_valve(kent_model *m, kent_layout *l, kent_valve *valve,
+                                int node)
+{
+    valve->node[0] = node;
+    valve->node[1] = -1;
+    if (!isnan(valve->discharge_level)) return;
+    kent_arm arms[KENT_ARMS];
+    const size_t count = kent_layout_arms(m, l, valve->point, arms);
+    assert(count == 2); /* kent_layout_place_devices saw to it */
+    (void)count;
+    valve->node[1] = part_arm(m, l, valve->point, arms[1]);
+}
+
+static void make_nodes_of_device(kent_model *m, kent_layout *l, kent_device *d,
+                                 int node)
+{
+    const bool at_end =
+        d->kind == KENT_DEVICE_PUMP && isfinite(m->pumps[d->index].suction_level);
+    d->node[0] = at_end ? -1 : node;
+    d->node[1] =
+        at_end ? node : part_arm(m, l, d->point, kent_device_delivery(m, l, d));
 }
 
 static void make_nodes_at(kent_model *m, kent_layout *l, int point)
@@ -67,17 +94,10 @@ static void make_nodes_at(kent_model *m, kent_layout *l, int point)
         m->outflows[device.index].node = node;
         break;
     case KENT_SEAT_VALVE:
-        m->valves[device.index].node[0] = node;
-        m->valves[device.index].node[1] = -1;
-        if (is_in_line(m, device)) {
-            kent_arm arms[KENT_ARMS];
-            const size_t count = kent_layout_arms(m, l, point, arms);
-            assert(count == 2); /* kent_layout_place_devices saw to it */
-            (void)count;
-            const int beyond = add_node(m, point, device);
-            l->arm_node[kent_arm_number(arms[1])] = beyond;
-            m->valves[device.index].node[1] = beyond;
-        }
+        make_nodes_of_valve(m, l, &m->valves[device.index], node);
+        break;
+    case KENT_SEAT_DEVICE:
+        make_nodes_of_device(m, l, &m->devices[device.index], node);
         break;
     }
 }
@@ -214,6 +234,7 @@ kent_status kent_network_cut(kent_model *m, kent_layout *l, kent_complaints *com
     }
     note_gas(m);
     group_ends(m);
+    kent_devices_stand(m, l);
     return check_span_ids(m, complaints);
 }
 
@@ -224,6 +245,15 @@ static int across_valve(const kent_model *m, size_t node)
     const kent_valve *valve = &m->valves[m->nodes[node].device];
     if (valve->node[1] < 0 || !(valve->opening > 0.0)) return -1;
     return valve->node[valve->node[0] == (int)node ? 1 : 0];
+}
+
+/* Marks and queues a node; returns whether it was new. */
+static size_t visit(int node, int part, int *part_of, int *queue, size_t count)
+{
+    if (node < 0 || part_of[node] >= 0) return count;
+    part_of[node] = part;
+    queue[count] = node;
+    return count + 1;
 }
 
 /* Gives every node reached from start the number `part`, listing them in queue; returns
@@ -237,17 +267,28 @@ static size_t reach(const kent_model *m, int start, int part, int *part_of, int 
         const kent_node *node = &m->nodes[queue[head]];
         for (size_t e = 0; e < node->end_count; e++) {
             const kent_end end = m->ends[node->end_first + e];
-            const int other = m->spans[end.span].node[1 - end.side];
-            if (part_of[other] >= 0) continue;
-            part_of[other] = part;
-            queue[count++] = other;
+            count = visit(m->spans[end.span].node[1 - end.side], part, part_of, queue,
+                          count);
         }
-        const int other = across_valve(m, (size_t)queue[head]);
-        if (other < 0 || part_of[other] >= 0) continue;
-        part_of[other] = part;
-        queue[count++] = other;
+        for (size_t k = 0; k < node->stand_count; k++) {
+            const kent_device *d = &m->devices[m->stands[node->stand_first + k]];
+            count = visit(d->node[0], part, part_of, queue, count);
+            count = visit(d->node[1], part, part_of, queue, count);
+        }
+        count =
+            visit(across_valve(m, (size_t)queue[head]), part, part_of, queue, count);
     }
     return count;
+}
+
+/* Whether a pump there has a suction level, which ties the heads beyond it. */
+static bool draws_from_a_level(const kent_model *m, const kent_node *node)
+{
+    for (size_t k = 0; k < node->stand_count; k++) {
+        const kent_device *d = &m->devices[m->stands[node->stand_first + k]];
+        if (d->kind == KENT_DEVICE_PUMP && d->node[0] < 0) return true;
+    }
+    return false;
 }
 
 static void complain_cut_off(const kent_model *m, const int *nodes, size_t count,
@@ -295,7 +336,8 @@ kent_status kent_network_check_connected(const kent_model *m,
         const size_t count = reach(m, (int)n, (int)n, part_of, queue);
         bool has_level = false;
         for (size_t i = 0; i < count; i++) {
-            has_level |= m->nodes[queue[i]].kind == KENT_NODE_FIXED_LEVEL;
+            has_level |= m->nodes[queue[i]].kind == KENT_NODE_FIXED_LEVEL ||
+                         draws_from_a_level(m, &m->nodes[queue[i]]);
         }
         if (!has_level) complain_cut_off(m, queue, count, complaints);
     }

@@ -35,6 +35,10 @@ void kent_parts_find(const kent_model *m, const bool *passes, int *part)
             join(part, v->node[0], v->node[1]);
         }
     }
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_device *d = &m->devices[i];
+        if (d->node[0] >= 0 && d->node[1] >= 0) join(part, d->node[0], d->node[1]);
+    }
     for (size_t n = 0; n < m->node_count; n++) {
         part[n] = root(part, (int)n);
     }

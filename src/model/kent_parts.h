@@ -7,7 +7,8 @@
 #include <stdbool.h>
 
 /* part: [node_count], written: nodes of one part carry the same number, that of one of
- * them. passes: [valve_count] which in-line valves join their two sides; NULL: all. */
+ * them. passes: [valve_count] which in-line valves join their two sides; NULL: all.
+ * Pumps, check and control valves always do. */
 void kent_parts_find(const kent_model *m, const bool *passes, int *part);
 
 #endif

@@ -85,6 +85,11 @@ kent_status kent_state_levels(kent_model *m)
             *of_part = fmax(*of_part, level); /* fmax passes over the NAN */
         }
     }
+    for (size_t i = 0; i < m->pump_count; i++) {
+        const kent_pump *p = &m->pumps[i];
+        if (isnan(p->suction_level)) continue;
+        highest[part[p->node[1]]] = fmax(highest[part[p->node[1]]], p->suction_level);
+    }
     for (size_t n = 0; n < m->node_count; n++) {
         m->highest_level[n] = highest[part[n]];
     }
@@ -119,11 +124,12 @@ static int own(void **array, size_t count, size_t size)
 static int own_what_states_change(kent_model *view)
 {
     void *levels = view->fixed_levels, *outflows = view->outflows, *spans = view->spans,
-         *valves = view->valves;
+         *valves = view->valves, *pumps = view->pumps;
     view->fixed_levels = NULL;
     view->outflows = NULL;
     view->spans = NULL;
     view->valves = NULL;
+    view->pumps = NULL;
     if (own(&levels, view->fixed_level_count, sizeof *view->fixed_levels)) return -1;
     view->fixed_levels = levels;
     if (own(&outflows, view->outflow_count, sizeof *view->outflows)) return -1;
@@ -132,6 +138,8 @@ static int own_what_states_change(kent_model *view)
     view->spans = spans;
     if (own(&valves, view->valve_count, sizeof *view->valves)) return -1;
     view->valves = valves;
+    if (own(&pumps, view->pump_count, sizeof *view->pumps)) return -1;
+    view->pumps = pumps;
     return 0;
 }
 
@@ -151,6 +159,10 @@ kent_model *kent_model_in_state(const kent_model *m, int state, const double *ca
     }
     for (size_t i = 0; i < view->outflow_count; i++) {
         view->outflows[i].flow *= s->outflow_factor;
+    }
+    for (size_t i = 0; i < s->running_count; i++) {
+        const kent_state_running *r = &m->state_running[s->running_first + i];
+        view->pumps[r->pump].running = r->running;
     }
     for (size_t i = 0; i < view->span_count; i++) {
         roughen(&view->spans[i], s->roughness_factor);
@@ -194,5 +206,6 @@ void kent_model_view_free(kent_model *view)
     free(view->outflows);
     free(view->spans);
     free(view->valves);
+    free(view->pumps);
     free(view);
 }

@@ -63,6 +63,18 @@
     X(KENT_FIXED_UPSTREAM, "fixed-upstream")                                           \
     X(KENT_FIXED_THROUGHOUT, "fixed-throughout")
 
+#define DEVICES(X)                                                                     \
+    X(KENT_DEVICE_PUMP, "pump")                                                        \
+    X(KENT_DEVICE_CHECK_VALVE, "check valve")                                          \
+    X(KENT_DEVICE_CONTROL_VALVE, "control valve")                                      \
+    X(KENT_DEVICE_SURGE_TANK, "surge tank")                                            \
+    X(KENT_DEVICE_ONE_WAY_TANK, "one-way surge tank")                                  \
+    X(KENT_DEVICE_AIR_VESSEL, "air vessel")                                            \
+    X(KENT_DEVICE_RELIEF_VALVE, "relief valve")                                        \
+    X(KENT_DEVICE_AIR_VALVE, "air valve")                                              \
+    X(KENT_DEVICE_BURST, "burst")                                                      \
+    X(KENT_DEVICE_KINDS, "unknown")
+
 #define AS_CASE(name, word)                                                            \
     case name:                                                                         \
         return word;
@@ -81,6 +93,7 @@ WORD_FUNCTION(kent_branch_end_word, kent_branch_end, end, BRANCH_ENDS)
 WORD_FUNCTION(kent_orientation_word, kent_orientation, orientation, ORIENTATIONS)
 WORD_FUNCTION(kent_joint_word, kent_joint, joint, JOINTS)
 WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
+WORD_FUNCTION(kent_device_word, kent_device_kind, kind, DEVICES)
 WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
 WORD_FUNCTION(kent_friction_word, kent_friction_law, law, FRICTION_LAWS)
 WORD_FUNCTION(kent_axial_support_word, kent_axial_support, support, AXIAL_SUPPORTS)

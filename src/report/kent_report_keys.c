@@ -7,21 +7,14 @@
 static const char TABLE_HEAD[] = "| key | takes | range | default | since | says |\n"
                                  "| --- | --- | --- | --- | --- | --- |\n";
 
-static const char LATER_HEAD[] =
-    "\n## Keys of later versions\n\n"
-    "Named here so that nobody uses them for something else; refused with \"not in "
-    "this version\".\n\n";
-
-/* `"SI"`, `"US"`; a word of a later version is left out. */
+/* `"SI"`, `"US"` */
 static void add_words(const char *words, kent_text *out)
 {
     bool first = true;
     for (const char *p = words; p;) {
         const size_t length = strcspn(p, "|");
-        if (p[0] != '~') {
-            kent_text_add(out, "%s`\"%.*s\"`", first ? "" : ", ", (int)length, p);
-            first = false;
-        }
+        kent_text_add(out, "%s`\"%.*s\"`", first ? "" : ", ", (int)length, p);
+        first = false;
         p = p[length] == '|' ? p + length + 1 : NULL;
     }
 }
@@ -96,19 +89,12 @@ kent_status kent_report_keys(kent_sink sink)
     const char *group = "";
     for (size_t i = 0; i < KENT_KEY_COUNT; i++) {
         const kent_key *k = &KENT_KEYS[i];
-        if (!kent_key_is_now(k)) continue;
         if (strcmp(k->group, group) != 0) {
             group = k->group;
             kent_text_add(&out, "\n### `%s`: %s\n\n%s", group,
                           kent_key_group_word(group), TABLE_HEAD);
         }
         add_row(k, &out);
-    }
-    kent_text_add(&out, "%s", LATER_HEAD);
-    for (size_t i = 0; i < KENT_KEY_COUNT; i++) {
-        const kent_key *k = &KENT_KEYS[i];
-        if (kent_key_is_now(k)) continue;
-        kent_text_add(&out, "- `%s` of `%s`: %s\n", k->key, k->group, k->says);
     }
     const kent_status status = kent_sink_flush(sink, &out);
     kent_text_clear(&out);

@@ -48,8 +48,8 @@ static const kind_row KINDS[KENT_KIND_COUNT] = {KENT_KIND_LIST(KENT_AS_ROW)};
 /* What the trade writes and UDUNITS does not know, or takes for something else. Exact
  * by definition: foot 0.3048 m, pound 0.45359237 kg, US gallon 231 in3 = 3.785411784 L,
  * Imperial gallon 4.54609 L, standard gravity 9.80665 m/s2 (NIST SP 811, appendix B);
- * head of water at 1000 kg/m3. UDUNITS' own gallon is rounded, and its gal is an
- * acceleration. */
+ * head of water at 1000 kg/m3. UDUNITS' own gallon, slug and horsepower are rounded,
+ * and its gal is an acceleration. */
 typedef struct short_form {
     const char *text, *meaning;
 } short_form;
@@ -85,6 +85,10 @@ static const short_form SHORT_FORMS[] = {
     {"ft_H2O", "(2989.06692 Pa)"},
     {"cP", "(0.001 Pa s)"},
     {"deg", "degree"},
+    {"RPM", "rpm"},
+    {"rev", "turn"},
+    {"slug", "(" POUND " s^2/ft)"},
+    {"hp", "(550 ft " POUND "/s)"},
 };
 
 /* What one display unit is in SI: si = shown x size + zero. */
@@ -129,6 +133,11 @@ static const unit_size UNIT_SIZES[] = {
     {"degC", 1.0, 273.15},
     {"degF", 1.0 / 1.8, 459.67 / 1.8},
     {"deg", 0.017453292519943295, 0.0},
+    {"rpm", 3.14159265358979323846 / 30.0, 0.0},
+    {"kg m2", 1.0, 0.0},
+    {"lb ft2", 0.45359237 * 0.09290304, 0.0},
+    {"kW", 1e3, 0.0},
+    {"hp", 550.0 * 4.4482216152605 * 0.3048, 0.0}, /* 550 ft lbf/s */
     {"m/s2", 1.0, 0.0},
     {"ft/s2", 0.3048, 0.0},
     {"1/GPa", 1e-9, 0.0},

@@ -35,6 +35,11 @@
     X(KENT_TEMPERATURE, "a temperature", "K", "degC", 1, "degF", 0, "12 degC",         \
       "54 degF")                                                                       \
     X(KENT_ANGLE, "an angle", "rad", "deg", 1, "deg", 1, "22.5 deg", "22.5 deg")       \
+    X(KENT_ROTATION, "a rotation speed", "radian/s", "rpm", 0, "rpm", 0, "1480 rpm",   \
+      "1770 rpm")                                                                      \
+    X(KENT_INERTIA, "a moment of inertia", "kg m2", "kg m2", 2, "lb ft2", 1,           \
+      "7.6 kg m^2", "180 lb ft^2")                                                     \
+    X(KENT_POWER, "a power", "W", "kW", 1, "hp", 1, "150 kW", "200 hp")                \
     X(KENT_ACCELERATION, "an acceleration", "m/s2", "m/s2", 4, "ft/s2", 3,             \
       "9.81 m/s^2", "32.2 ft/s^2")                                                     \
     X(KENT_COMPLIANCE, "a compliance", "1/Pa", "1/GPa", 4, "1/ksi", 6,                 \

@@ -78,12 +78,9 @@ static inline void value_text(const kent_key *k, double value, char *out, size_t
     }
 }
 
-/* The next key of this version from *index on; NULL: no more. */
+/* The next key from *index on; NULL: no more. */
 static inline const kent_key *next_now(size_t *index)
 {
-    while (*index < KENT_KEY_COUNT && !kent_key_is_now(&KENT_KEYS[*index])) {
-        ++*index;
-    }
     return *index < KENT_KEY_COUNT ? &KENT_KEYS[(*index)++] : NULL;
 }
 

@@ -61,26 +61,16 @@ static void the_tables_of_the_manual_are_those_that_the_program_prints(void **st
     free(manual);
 }
 
-/* As a line of its own, with its default, or in the list of later ones. */
+/* As a line of its own, with its default. */
 static void every_key_is_printed_once(void **state)
 {
     (void)state;
     kent_text printed = printed_keys();
-    size_t now = 0;
-    size_t later = 0;
-    for (size_t i = 0; i < KENT_KEY_COUNT; i++) {
-        if (kent_key_is_now(&KENT_KEYS[i])) {
-            now++;
-        } else {
-            later++;
-        }
-    }
+    size_t rows = 0;
     for (const char *p = kent_text_of(&printed); *p != '\0'; p++) {
-        if (strncmp(p, "\n| `", 4) == 0) now--;
-        if (strncmp(p, "\n- `", 4) == 0) later--;
+        if (strncmp(p, "\n| `", 4) == 0) rows++;
     }
-    assert_int_equal(now, 0);
-    assert_int_equal(later, 0);
+    assert_int_equal(rows, KENT_KEY_COUNT);
     kent_text_clear(&printed);
 }
 
@@ -95,13 +85,12 @@ static void a_row_says_what_a_key_takes(void **state)
         "\n| `water_table` | a length, `\"1.4 m\"`, or `\"none\"` | ",
         "\n| `pipes` | a list of groups, each a pipe | ",
         "\n| `route` | a list | ",
-        "\n- `inertia` of `pump`: ",
+        "\n| `inertia` | a moment of inertia, `\"7.6 kg m^2\"` | ",
     };
     kent_text printed = printed_keys();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
         if (!strstr(kent_text_of(&printed), ROWS[i])) fail_msg("no row%s", ROWS[i]);
     }
-    assert_null(strstr(kent_text_of(&printed), "~")); /* words of later versions */
     kent_text_clear(&printed);
 }
 

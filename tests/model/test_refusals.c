@@ -156,7 +156,7 @@ static void one_device_stands_at_a_point(void **state)
     kent_build b = sound();
     kent_build_fixed_level(&b, "R", 50.0);
     kent_build_outflow(&b, "R", 0.1);
-    kent_build_refused(&b, "one device per point", 300);
+    kent_build_refused(&b, "another device stands there", 300);
 }
 
 static void a_device_stands_on_a_pipe(void **state)

@@ -202,6 +202,7 @@ int kent_build_scenario(kent_build *b, const char *id, double duration)
     m->scenarios[i] = (kent_scenario){.duration = duration,
                                       .class_of = KENT_OCCASIONAL,
                                       .event_first = m->event_count,
+                                      .same_as = -1,
                                       .place = {0, 500 + i}};
     name(m->scenarios[i].id, id);
     return i;
@@ -255,6 +256,7 @@ static int add_event(kent_build *b, int scenario, kent_event event)
     m->events = one_more(b, EVENTS, m->events, &m->event_count, sizeof *m->events);
     const int i = (int)m->event_count - 1;
     m->events[i] = event;
+    m->events[i].period = (double)NAN;
     m->events[i].place = (kent_place){0, 600 + i};
     m->scenarios[scenario].event_count++;
     return i;
@@ -268,7 +270,8 @@ int kent_build_ramp(kent_build *b, int scenario, kent_event_kind kind, int targe
                                   .target = target,
                                   .start_time = start_time,
                                   .ramp_time = ramp_time,
-                                  .to = to});
+                                  .to = to,
+                                  .coefficient = 0.6});
 }
 
 int kent_build_law(kent_build *b, int scenario, kent_event_kind kind, int target,

@@ -141,6 +141,10 @@ static void what_no_event_touches_has_no_course(void **state)
 {
     (void)state;
     plan p = plan_new();
+    kent_model *m = p.build.model;
+    m->bursts = kent_alloc(1, sizeof *m->bursts);
+    assert_non_null(m->bursts);
+    m->bursts[m->burst_count++] = (kent_burst){.point = m->valves[p.valve].point};
     kent_build_ramp(&p.build, 0, KENT_EVENT_BURST, 0, 2.0, 1.0, 0.003);
     plan_ready(&p);
     const kent_course *hole = kent_schedule_course(p.schedule, KENT_EVENT_BURST, 0);

@@ -134,6 +134,15 @@ static void other_short_forms_have_their_exact_factors(void **state)
         {"180 deg", KENT_ANGLE, 3.14159265358979323846},
         {"180\xC2\xB0", KENT_ANGLE, 3.14159265358979323846},
         {"0.39 rad", KENT_ANGLE, 0.39},
+        {"60 rpm", KENT_ROTATION, 6.283185307179586}, /* a turn is 2 pi rad */
+        {"1480 RPM", KENT_ROTATION, 1480.0 * 0.10471975511965978},
+        {"1480 rev/min", KENT_ROTATION, 1480.0 * 0.10471975511965978},
+        {"155 rad/s", KENT_ROTATION, 155.0},
+        {"1 lb ft2", KENT_INERTIA, 0.45359237 * 0.09290304},
+        {"1 slug ft2", KENT_INERTIA, 4.4482216152605 * 0.3048},
+        {"30 kgf m s2", KENT_INERTIA, 30.0 * 9.80665},
+        {"1 kW", KENT_POWER, 1000.0},
+        {"1 hp", KENT_POWER, 550.0 * 0.3048 * 4.4482216152605},
         {"150 %", KENT_RATIO, 1.5},
         {"1.5", KENT_RATIO, 1.5},
         {"-1.5", KENT_RATIO, -1.5},
@@ -232,7 +241,10 @@ static void units_that_only_look_alike_are_refused(void **state)
     assert_refused("3 1/m", KENT_LENGTH, "is not a length");  /* another */
     assert_refused("24.67 Hz", KENT_RATIO, "is not a ratio"); /* turns a second */
     assert_refused("24.67 Hz", KENT_ANGLE, "is not an angle");
-    assert_refused("5 rpm", KENT_ANGLE, "is not an angle");
+    assert_refused("5 rpm", KENT_ANGLE, "is a rotation speed where an angle belongs");
+    assert_refused("24.67 Hz", KENT_ROTATION, "is not a rotation speed");
+    assert_refused("1480 1/min", KENT_ROTATION, "is not a rotation speed");
+    assert_refused("30 kgf m^2", KENT_INERTIA, "is not a moment of inertia"); /* GD2 */
     assert_refused("5600 lb", KENT_FORCE, "is not a force");          /* a mass */
     assert_refused("12 C", KENT_TEMPERATURE, "is not a temperature"); /* coulomb */
     assert_refused("15 mpa", KENT_PRESSURE, "is not a unit");
