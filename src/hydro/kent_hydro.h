@@ -8,5 +8,6 @@
 #include "kent_valve.h"
 #include "kent_water.h"
 #include "kent_wave.h"
+#include "kent_weighting.h"
 
 #endif

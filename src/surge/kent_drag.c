@@ -161,7 +161,8 @@ kent_status kent_drag_new(const kent_model *m, const kent_steady *s,
     kent_drag *d = kent_alloc(1, sizeof *d);
 
     if (!d) goto done;
-    d->follows = m->solver.friction == KENT_SURGE_QUASI_STEADY;
+    d->follows = m->solver.friction == KENT_SURGE_QUASI_STEADY ||
+                 m->solver.friction == KENT_SURGE_UNSTEADY;
     d->spans = kent_alloc(m->span_count, sizeof *d->spans);
     d->implicit = kent_alloc(m->span_count, sizeof *d->implicit);
     if (!d->spans || !d->implicit) goto done;

@@ -26,7 +26,7 @@ typedef struct kent_drag_span {
 } kent_drag_span;
 
 typedef struct kent_drag {
-    bool follows; /* quasi-steady: k follows the flow */
+    bool follows; /* quasi-steady, unsteady: k follows the flow */
     kent_drag_span *spans;
     kent_drag_line *lines; /* the spans' tables */
     bool *implicit;        /* [span_count] swept point-implicitly */
@@ -42,8 +42,8 @@ void kent_drag_free(kent_drag *d);
 void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
                      kent_waves *w);
 
-/* Quasi-steady: k of every node by its flow now, in a straight line between the edges
- * of its bin. Does nothing otherwise. */
+/* Quasi-steady and unsteady: k of every node by its flow now, in a straight line
+ * between the edges of its bin. Does nothing otherwise. */
 void kent_drag_refresh(kent_drag *d, kent_waves *w);
 
 #endif

@@ -17,6 +17,16 @@
         double *restrict m, double *restrict highest, double *restrict lowest)         \
     {                                                                                  \
         return kent_kernel_body(n, limit, 1, k, p, m, highest, lowest);                \
+    }                                                                                  \
+    attribute static void recall_##level(const kent_fade *f, double *restrict p,       \
+                                         double *restrict m)                           \
+    {                                                                                  \
+        kent_fade_recall(f, p, m);                                                     \
+    }                                                                                  \
+    attribute static void yield_##level(const kent_fade *f, double *restrict p,        \
+                                        double *restrict m)                            \
+    {                                                                                  \
+        kent_fade_yield(f, p, m);                                                      \
     }
 /* NOLINTEND(bugprone-macro-parentheses) */
 
@@ -28,10 +38,10 @@ KENT_KERNEL(avx512, __attribute__((target("avx512f"))))
 
 /* Best last. */
 static const kent_kernel KERNELS[] = {
-    {"base", explicit_base, implicit_base},
+    {"base", explicit_base, implicit_base, recall_base, yield_base},
 #ifdef __x86_64__
-    {"avx2", explicit_avx2, implicit_avx2},
-    {"avx512", explicit_avx512, implicit_avx512},
+    {"avx2", explicit_avx2, implicit_avx2, recall_avx2, yield_avx2},
+    {"avx512", explicit_avx512, implicit_avx512, recall_avx512, yield_avx512},
 #endif
 };
 enum { KERNEL_COUNT = sizeof KERNELS / sizeof KERNELS[0] };

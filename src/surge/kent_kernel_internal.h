@@ -25,6 +25,7 @@
 #define KENT_KERNEL_INTERNAL_H
 
 #include "kent_base.h"
+#include "kent_fade_internal.h"
 
 #include <math.h>
 #include <stddef.h>
@@ -38,6 +39,7 @@ typedef int64_t kent_sweep(size_t n, double limit, const double *restrict k,
 typedef struct kent_kernel {
     const char *name;
     kent_sweep *explicit_sweep, *implicit_sweep;
+    kent_fade_pass *recall, *yield; /* of one span: friction, wall */
 } kent_kernel;
 
 /* The best the processor has; wanted, if not NULL or empty, names another. Fails with

@@ -1,6 +1,7 @@
 #include "kent_marcher.h"
 
 #include "kent_drag_internal.h"
+#include "kent_recall_internal.h"
 #include "kent_stands_internal.h"
 
 #include <math.h>
@@ -21,6 +22,7 @@ struct kent_marcher {
     const kent_kernel *kernel;
     kent_waves *waves;
     kent_drag *drag;
+    kent_recall *recall; /* NULL: nothing remembers */
     kent_ends *ends;
     kent_schedule *schedule;
     double step;    /* s */
@@ -94,6 +96,7 @@ static void start_waves(kent_marcher *k, const kent_steady *s)
         kent_waves_set(k->waves, i, head, s->span_flow[i]);
     }
     kent_drag_start(k->drag, k->model, s, k->waves);
+    kent_recall_start(k->recall, k->waves);
 }
 
 /* NOLINTNEXTLINE(readability-function-size): five things to know, four to say how */
@@ -127,6 +130,9 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
     if (status == KENT_OK) {
         status = kent_waves_new(m, grid, k->drag->implicit, &k->waves, err);
     }
+    if (status == KENT_OK) {
+        status = kent_recall_new(m, s, grid, k->waves, &k->recall, err);
+    }
     if (status == KENT_OK)
         status = kent_ends_new(m, s, k->waves, scenario, &k->ends, err);
     if (status == KENT_OK) status = kent_schedule_new(m, scenario, &k->schedule, err);
@@ -145,6 +151,7 @@ void kent_marcher_free(kent_marcher *k)
     if (!k) return;
     kent_waves_free(k->waves);
     kent_drag_free(k->drag);
+    kent_recall_free(k->recall);
     kent_ends_free(k->ends);
     kent_schedule_free(k->schedule);
     free(k->eyes);
@@ -202,11 +209,14 @@ found:;
 /* From one instant to the next. */
 static bool advance_once(kent_marcher *k)
 {
+    kent_recall_pull(k->recall, k->kernel, k->waves);
     kent_drag_refresh(k->drag, k->waves);
     if (kent_waves_sweep(k->waves, k->kernel) != 0) {
-        stop(k);
+        stop(k); /* which finds the culprits where they are */
         return false;
     }
+    kent_recall_yield(k->recall, k->kernel, k->waves);
+    kent_waves_move(k->waves);
     k->instant++;
     kent_ends_move(k->ends, k->schedule, now(k), k->step);
     kent_ends_solve(k->ends, k->waves);

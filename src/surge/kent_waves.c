@@ -110,8 +110,19 @@ void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flo
     }
 }
 
+int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel)
+{
+    const size_t e = w->explicit_total;
+    int64_t beyond = kernel->explicit_sweep(e, KENT_EXPLICIT_LIMIT, w->k, w->p, w->m,
+                                            w->twice_highest, w->twice_lowest);
+    beyond +=
+        kernel->implicit_sweep(w->node_total - e, DBL_MAX, w->k + e, w->p + e, w->m + e,
+                               w->twice_highest + e, w->twice_lowest + e);
+    return beyond;
+}
+
 /* 7.8: the node to the right receives p, the node to the left m. */
-static void move_on(kent_waves *w)
+void kent_waves_move(kent_waves *w)
 {
     const size_t bytes = w->node_total * sizeof *w->p;
     if (w->p == w->p_store) {
@@ -124,18 +135,6 @@ static void move_on(kent_waves *w)
     }
     w->p -= 1;
     w->m += 1;
-}
-
-int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel)
-{
-    const size_t e = w->explicit_total;
-    int64_t beyond = kernel->explicit_sweep(e, KENT_EXPLICIT_LIMIT, w->k, w->p, w->m,
-                                            w->twice_highest, w->twice_lowest);
-    beyond +=
-        kernel->implicit_sweep(w->node_total - e, DBL_MAX, w->k + e, w->p + e, w->m + e,
-                               w->twice_highest + e, w->twice_lowest + e);
-    if (beyond == 0) move_on(w); /* else the culprits stay where they can be found */
-    return beyond;
 }
 
 double kent_waves_head(const kent_waves *w, size_t node)

@@ -35,9 +35,12 @@ void kent_waves_free(kent_waves *w);
 /* A straight grade line between two heads (m) and one flow (m3/s) along a span. */
 void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flow);
 
-/* Friction, envelopes and the move to the neighbours. Returns the number of nodes left
- * untouched because they were beyond the limit (or not a number). */
+/* Friction and envelopes. Returns the number of nodes left untouched because they were
+ * beyond the limit (or not a number). */
 int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel);
+
+/* To the next instant: what leaves a node belongs to its neighbours. */
+void kent_waves_move(kent_waves *w);
 
 /* m and m3/s at a node. */
 double kent_waves_head(const kent_waves *w, size_t node);
