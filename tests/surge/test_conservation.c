@@ -75,6 +75,7 @@ static void go_on(rig *r, bool events, size_t steps)
     const double step = r->march.grid->step;
     for (size_t i = 0; i < steps; i++) {
         assert_int_equal(kent_waves_sweep(r->waves, r->kernel), 0);
+        kent_waves_move(r->waves);
         r->instant++;
         if (events) {
             kent_ends_move(r->ends, r->schedule, (double)r->instant * step, step);
