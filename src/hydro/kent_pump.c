@@ -137,11 +137,11 @@ static void interpolate_suter(kent_pump_curve *c)
 static curve_value added(const kent_pump_join join[2], double last_angle, double x)
 {
     const double still = 1.5 * PI;
-    if (x > PI - BELOW && x < PI) {
+    if (x > PI - BELOW && x <= PI) {
         return cubic(BELOW, (x - (PI - BELOW)) / BELOW, (double[]){0.0, join[0].value},
                      (double[]){0.0, join[0].slope});
     }
-    if (x > last_angle && x < still) {
+    if (x >= last_angle && x < still) {
         const double width = still - last_angle;
         return cubic(width, (x - last_angle) / width, (double[]){join[1].value, 0.0},
                      (double[]){join[1].slope, 0.0});

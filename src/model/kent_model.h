@@ -895,6 +895,8 @@ int kent_model_device_index(const kent_model *m, const char *id); /* into device
 /* By its own id, else by that of one of its members. */
 int kent_model_fitting_of(const kent_model *m, const char *id);
 
+kent_place kent_device_place(const kent_model *m, const kent_device *d);
+
 /* Words as in the case file and in results: "bend", "dead-end", "push-on" ... */
 const char *kent_fitting_type_word(kent_fitting_type type);
 const char *kent_role_word(kent_role role); /* "tapping-tee" ...; "": none */

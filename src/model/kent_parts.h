@@ -11,4 +11,9 @@
  * Pumps, check and control valves always do. */
 void kent_parts_find(const kent_model *m, const bool *passes, int *part);
 
+/* The node that stands for n's part; puts two nodes into one part. part[n] is n to
+ * start with. */
+int kent_parts_root(int *part, int n);
+void kent_parts_join(int *part, int a, int b);
+
 #endif

@@ -1,4 +1,5 @@
 #include "kent_equations_internal.h"
+#include "kent_duty_internal.h"
 
 #include <assert.h>
 #include <math.h>
@@ -35,47 +36,16 @@ static double laminar_slope(const kent_span *span)
            (PI * f->gravity * bore2 * bore2);
 }
 
-static kent_link valve_link(const kent_valve *v)
-{
-    const double share = kent_valve_relative_capacity(&v->curve, v->opening);
-    const double capacity = v->capacity * share; /* m^2.5/s; NAN: by flow */
-    kent_link link = {.law = KENT_LINK_FLOW,
-                      .node = {v->node[0], v->node[1]},
-                      .level = v->discharge_level};
-    if (isnan(v->capacity)) {
-        link.flow = v->flow;
-    } else if (capacity > 0.0) { /* else closed: no flow */
-        link.law = KENT_LINK_LOSS;
-        link.resistance = 1.0 / (capacity * capacity);
-    }
-    return link;
-}
-
-/* A dependent outflow between none and all is an orifice at the level of its point,
- * since p/full = (q/Q)^2. (6.8) */
-static kent_link outflow_link(const kent_model *m, const kent_outflow *o)
-{
-    kent_link link = {.law = KENT_LINK_FLOW,
-                      .node = {o->node, -1},
-                      .flow = o->flow,
-                      .level = m->points[o->point].at.z};
-    if (o->pressure_dependent && o->flow > 0.0) {
-        const double full_head = o->full_pressure / (m->water.density * m->gravity);
-        link.law = KENT_LINK_LOSS;
-        link.resistance = full_head / (o->flow * o->flow);
-    }
-    return link;
-}
-
 static void fill_links(kent_equations *eq)
 {
     const kent_model *m = eq->model;
     for (size_t i = 0; i < m->valve_count; i++) {
-        eq->link[i] = valve_link(&m->valves[i]);
+        eq->link[i] = kent_link_of_valve(&m->valves[i]);
     }
     for (size_t i = 0; i < m->outflow_count; i++) {
-        eq->link[m->valve_count + i] = outflow_link(m, &m->outflows[i]);
+        eq->link[eq->first_outflow + i] = kent_link_of_outflow(m, &m->outflows[i]);
     }
+    kent_duty_start(eq);
 }
 
 /* Loss of the flow out of a fixed level, on the area of its largest span. (6.5) */
@@ -140,11 +110,12 @@ static void fill_pattern(kent_equations *eq, int64_t *next)
     }
     for (size_t i = 0; i < eq->links; i++) {
         const int *node = eq->link[i].node;
-        node_entry(eq, next, node[0], first_link + i, -1.0);
-        if (node[1] >= 0) node_entry(eq, next, node[1], first_link + i, 1.0);
         at = eq->row[first_link + i];
-        eq->column[at++] = node[0];
-        if (node[1] >= 0) eq->column[at++] = node[1];
+        for (int side = 0; side < 2; side++) {
+            if (node[side] < 0) continue;
+            node_entry(eq, next, node[side], first_link + i, side == 0 ? -1.0 : 1.0);
+            eq->column[at++] = node[side];
+        }
         eq->column[at] = (int64_t)(first_link + i);
     }
 }
@@ -162,10 +133,13 @@ static void count_rows(kent_equations *eq)
         length[eq->nodes + e] = 3;
     }
     for (size_t i = 0; i < eq->links; i++) {
-        const int *node = eq->link[i].node;
-        length[node[0]]++;
-        if (node[1] >= 0) length[node[1]]++;
-        length[eq->nodes + eq->spans + i] = node[1] >= 0 ? 3 : 2;
+        int64_t *of_link = &length[eq->nodes + eq->spans + i];
+        *of_link = 1;
+        for (int side = 0; side < 2; side++) {
+            if (eq->link[i].node[side] < 0) continue;
+            length[eq->link[i].node[side]]++;
+            ++*of_link;
+        }
     }
     for (size_t i = 0; i < eq->size; i++) {
         eq->row[i + 1] += eq->row[i];
@@ -183,7 +157,10 @@ kent_status kent_equations_new(const kent_model *m, kent_equations **out,
     eq->model = m;
     eq->nodes = m->node_count;
     eq->spans = m->span_count;
-    eq->links = m->valve_count + m->outflow_count;
+    eq->first_outflow = m->valve_count;
+    eq->first_device = eq->first_outflow + m->outflow_count;
+    eq->first_standing = eq->first_device + m->device_count;
+    eq->links = eq->first_standing + m->pump_count;
     eq->size = eq->nodes + eq->spans + eq->links;
     eq->link = kent_alloc(eq->links, sizeof *eq->link);
     eq->fixed_level = kent_alloc(eq->nodes, sizeof *eq->fixed_level);
@@ -227,9 +204,7 @@ void kent_equations_start(const kent_equations *eq, double *x)
         x[eq->nodes + e] = START_SPEED * m->spans[e].area;
     }
     for (size_t i = 0; i < eq->links; i++) {
-        const kent_link *link = &eq->link[i];
-        x[eq->nodes + eq->spans + i] =
-            link->law == KENT_LINK_FLOW ? link->flow : eq->flow_scale;
+        x[eq->nodes + eq->spans + i] = kent_link_start(&eq->link[i], eq->flow_scale);
     }
 }
 
@@ -253,22 +228,6 @@ static double node_residual(const kent_equations *eq, const double *x, size_t n)
            eq->entry[n] * out * out; /* (6.5) */
 }
 
-/* h: heads, q: the link's flow. */
-static double link_residual(const kent_link *link, const double *h, double q)
-{
-    const double before = h[link->node[0]];
-    switch (link->law) {
-    case KENT_LINK_FLOW:
-        return q - link->flow;
-    case KENT_LINK_HEAD:
-        return before - link->level;
-    case KENT_LINK_LOSS:
-        break;
-    }
-    return before - (link->node[1] >= 0 ? h[link->node[1]] : link->level) -
-           link->resistance * q * fabs(q);
-}
-
 void kent_equations_residual(const kent_equations *eq, const double *x, double *f)
 {
     const double *q = x + eq->nodes;
@@ -284,20 +243,20 @@ void kent_equations_residual(const kent_equations *eq, const double *x, double *
                            kent_span_loss(eq->model, span, q[e], &slope);
     }
     for (size_t i = 0; i < eq->links; i++) {
-        f[first_link + i] = link_residual(&eq->link[i], x, x[first_link + i]);
+        f[first_link + i] = kent_link_residual(&eq->link[i], x, x[first_link + i]);
     }
 }
 
-/* d(before, after, flow) of a link's law. */
-static void link_derivatives(const kent_link *link, double q, double *value)
+/* heads: x of the nodes. value: the link's row. */
+static void link_row(const kent_link *link, const double *heads, double q,
+                     double *value)
 {
-    const bool lossy = link->law == KENT_LINK_LOSS;
-    double by_flow = 0.0;
-    if (link->law == KENT_LINK_FLOW) by_flow = 1.0;
-    if (lossy) by_flow = -2.0 * link->resistance * fabs(q);
-    *value++ = link->law == KENT_LINK_FLOW ? 0.0 : 1.0;
-    if (link->node[1] >= 0) *value++ = lossy ? -1.0 : 0.0;
-    *value = by_flow;
+    double by[3]; /* the head before, the head behind, the flow */
+    kent_link_derivatives(link, heads, q, by);
+    for (int side = 0; side < 2; side++) {
+        if (link->node[side] >= 0) *value++ = by[side];
+    }
+    *value = by[2];
 }
 
 void kent_equations_derivatives(const kent_equations *eq, const double *x,
@@ -323,8 +282,7 @@ void kent_equations_derivatives(const kent_equations *eq, const double *x,
         span[2] = -fmax(slope, eq->least_slope[e]);
     }
     for (size_t i = 0; i < eq->links; i++) {
-        link_derivatives(&eq->link[i], x[first_link + i],
-                         value + eq->row[first_link + i]);
+        link_row(&eq->link[i], x, x[first_link + i], value + eq->row[first_link + i]);
     }
 }
 
@@ -333,5 +291,5 @@ bool kent_equations_is_flow(const kent_equations *eq, size_t i)
     const size_t first_link = eq->nodes + eq->spans;
     assert(i < eq->size);
     if (i < eq->nodes) return eq->fixed_level[i] < 0;
-    return i >= first_link && eq->link[i - first_link].law == KENT_LINK_FLOW;
+    return i >= first_link && kent_link_is_flow(&eq->link[i - first_link]);
 }

@@ -2,35 +2,21 @@
  * (docs/theory/06-steady.md).
  *
  * Unknowns x and equations f have the same layout: one per node (head, m; net inflow or
- * level), one per span (flow, m3/s; energy), one per link (flow, m3/s; its law). A link
- * is what lets water pass other than along a span: a valve or an outflow. */
+ * level), one per span (flow, m3/s; energy), one per link (flow, m3/s; its law). */
 #ifndef KENT_EQUATIONS_INTERNAL_H
 #define KENT_EQUATIONS_INTERNAL_H
 
-#include "kent_model.h"
+#include "kent_link_internal.h"
 
 #include <stddef.h>
 #include <stdint.h>
 
-typedef enum kent_link_law {
-    KENT_LINK_FLOW, /* passes a given flow                 (6.7) */
-    KENT_LINK_HEAD, /* holds a head before it, passes what that takes (6.9) */
-    KENT_LINK_LOSS  /* loses resistance q|q|               (6.6) */
-} kent_link_law;
-
-typedef struct kent_link {
-    kent_link_law law;
-    int node[2];       /* flow positive from [0] to [1]; [1] -1: out of the main */
-    double flow;       /* m3/s, of KENT_LINK_FLOW */
-    double level;      /* m, of KENT_LINK_HEAD; where KENT_LINK_LOSS discharges */
-    double resistance; /* s2/m5, of KENT_LINK_LOSS */
-} kent_link;
-
 typedef struct kent_equations {
     const kent_model *model;
     size_t nodes, spans, links, size; /* size: their sum */
-    kent_link *link;                  /* [links] valves, then outflows */
-    int *fixed_level;                 /* [nodes] index, or -1: a free node */
+    kent_link *link; /* [links] valves, outflows, devices, pumps' standing units */
+    size_t first_outflow, first_device, first_standing; /* of link */
+    int *fixed_level;    /* [nodes] index, or -1: a free node */
     double *entry;       /* [nodes] s2/m5, (1 + loss)/(2 g A^2) of a fixed level */
     double *least_slope; /* [spans] s/m2, below which no derivative is taken */
     double flow_scale;   /* m3/s, of 1 m/s in the largest span */
@@ -40,8 +26,8 @@ typedef struct kent_equations {
     double *sign;    /* [row[size]] in a node's row: +1 where the flow arrives */
 } kent_equations;
 
-/* Valves given by `flow` pass it; outflows draw their whole flow, pressure-dependent
- * ones as an orifice would. */
+/* Laws of valves and outflows are as the case states them; those of devices as of
+ * kent_duty_start. */
 kent_status kent_equations_new(const kent_model *m, kent_equations **out,
                                kent_error *err);
 void kent_equations_free(kent_equations *eq);

@@ -38,18 +38,20 @@ static bool outlet_switch(const kent_model *m, const kent_outflow *o, kent_link 
     return link->law != before.law;
 }
 
-size_t kent_outlet_switch(kent_equations *eq, const double *x, bool one)
+bool kent_outlet_switch(kent_equations *eq, const double *x, size_t outflow)
 {
     const kent_model *m = eq->model;
-    size_t changed = 0;
+    const kent_outflow *o = &m->outflows[outflow];
+    const size_t l = eq->first_outflow + outflow;
+    const double head = x[o->node] - m->points[o->point].at.z;
+    return outlet_switch(m, o, &eq->link[l], head, x[eq->nodes + eq->spans + l]);
+}
 
-    for (size_t i = 0; i < m->outflow_count; i++) {
-        const size_t l = m->valve_count + i;
-        kent_link *link = &eq->link[l];
-        const double head = x[link->node[0]] - m->points[m->outflows[i].point].at.z;
-        const double q = x[eq->nodes + eq->spans + l];
-        if (outlet_switch(m, &m->outflows[i], link, head, q)) changed++;
-        if (one && changed) break;
-    }
-    return changed;
+bool kent_outlet_loosen(kent_equations *eq, size_t outflow)
+{
+    const kent_outflow *o = &eq->model->outflows[outflow];
+    kent_link *link = &eq->link[eq->first_outflow + outflow];
+    if (o->flow <= 0.0 || link->law != KENT_LINK_FLOW) return false;
+    link->law = part_law(o);
+    return true;
 }

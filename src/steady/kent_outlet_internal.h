@@ -5,8 +5,12 @@
 
 #include "kent_equations_internal.h"
 
-/* Looks at a solution x and puts outflows whose law it contradicts under another one.
- * one: the first such outflow only. Returns how many changed; 0: x holds. */
-size_t kent_outlet_switch(kent_equations *eq, const double *x, bool one);
+/* Puts an outflow whose law a solution x contradicts under another one; whether it was.
+ */
+bool kent_outlet_switch(kent_equations *eq, const double *x, size_t outflow);
+
+/* Lets an outflow that draws all or nothing draw what the pressure allows; false: it
+ * does so already, or flows in. */
+bool kent_outlet_loosen(kent_equations *eq, size_t outflow);
 
 #endif

@@ -1,8 +1,8 @@
 #include "kent_steady.h"
-#include "kent_equations_internal.h"
+#include "kent_duty_internal.h"
+#include "kent_known_internal.h"
 #include "kent_newton_internal.h"
 #include "kent_outlet_internal.h"
-#include "kent_parts.h"
 
 #include <assert.h>
 #include <math.h>
@@ -11,8 +11,9 @@
 #include <string.h>
 
 enum {
-    ROUNDS_TOGETHER = 10, /* rounds in which every contradicted outflow moves */
-    ROUNDS = 300          /* and then one at a time, to this many in all */
+    ROUNDS_TOGETHER = 10, /* rounds in which every contradicted link moves */
+    ROUNDS = 300,         /* and then one at a time, to this many in all */
+    STRIDE = 7919         /* a prime: from round to round, where looking starts */
 };
 
 void kent_steady_free(kent_steady *s)
@@ -23,6 +24,7 @@ void kent_steady_free(kent_steady *s)
     free(s->valve_flow);
     free(s->valve_capacity);
     free(s->outflow);
+    free(s->device_flow);
     kent_model_view_free(s->view);
     free(s);
 }
@@ -45,10 +47,11 @@ static kent_steady *steady_new(const kent_model *m)
     s->valve_flow = kent_alloc(m->valve_count, sizeof *s->valve_flow);
     s->valve_capacity = kent_alloc(m->valve_count, sizeof *s->valve_capacity);
     s->outflow = kent_alloc(m->outflow_count, sizeof *s->outflow);
+    s->device_flow = kent_alloc(m->device_count, sizeof *s->device_flow);
     s->report = (kent_steady_report){
         .stop = KENT_STOP_CONVERGED, .worst_node = -1, .worst_span = -1};
     if (!s->node_head || !s->span_flow || !s->valve_flow || !s->valve_capacity ||
-        !s->outflow) {
+        !s->outflow || !s->device_flow) {
         kent_steady_free(s);
         return NULL;
     }
@@ -85,87 +88,13 @@ static kent_status check_valve_flows(const kent_model *m, kent_error *err)
     return KENT_OK;
 }
 
-/* Marks the parts whose heads something fixes: a fixed level, or a discharging valve
- * that passes what it will. */
-static void mark_known(const kent_equations *eq, const int *part, bool *known)
-{
-    const kent_model *m = eq->model;
-    for (size_t n = 0; n < eq->nodes; n++) {
-        if (eq->fixed_level[n] >= 0) known[part[n]] = true;
-    }
-    for (size_t i = 0; i < m->valve_count; i++) {
-        const kent_link *link = &eq->link[i];
-        if (link->law == KENT_LINK_LOSS && link->node[1] < 0) {
-            known[part[link->node[0]]] = true;
-        }
-    }
-}
-
-/* Says why the head at a node is not known: the first valve at its part that does not
- * pass on a head. */
-static kent_status tell_unknown(const kent_equations *eq, const int *part, size_t n,
-                                kent_error *err)
-{
-    const kent_model *m = eq->model;
-    for (size_t i = 0; i < m->valve_count; i++) {
-        const kent_valve *v = &m->valves[i];
-        const bool here = part[v->node[0]] == part[n] ||
-                          (v->node[1] >= 0 && part[v->node[1]] == part[n]);
-        char where[160];
-        if (!here || eq->link[i].law != KENT_LINK_FLOW) continue;
-        kent_model_place_text(m, v->place, where, sizeof where);
-        return kent_error_set(
-            err, KENT_E_INPUT, where,
-            "nothing fixes the head at point %s: only valve %s leads there, and it %s; "
-            "%s",
-            node_name(m, (int)n), v->id,
-            isnan(v->capacity) ? "is given by its flow" : "is closed",
-            isnan(v->capacity)
-                ? "give its loss, kv or cv instead, or a fixed level there"
-                : "open it, or give a fixed level there");
-    }
-    /* unreached: a part without a fixed level is refused when the model is derived */
-    return kent_error_set(err, KENT_E_INPUT, "",
-                          "nothing fixes the head at point %s; connect it to a fixed "
-                          "level",
-                          node_name(m, (int)n));
-}
-
-/* Every node must be joined to a known head by spans and valves that lose head. */
-static kent_status check_known(const kent_equations *eq, kent_error *err)
-{
-    kent_status status = KENT_OK;
-    const kent_model *m = eq->model;
-    int *part = kent_alloc(eq->nodes, sizeof *part);
-    bool *known = kent_alloc(eq->nodes, sizeof *known);
-    bool *passes = kent_alloc(m->valve_count, sizeof *passes);
-
-    if (!part || !known || !passes) {
-        status = kent_error_nomem(err);
-        goto done;
-    }
-    for (size_t i = 0; i < m->valve_count; i++) {
-        passes[i] = eq->link[i].law == KENT_LINK_LOSS;
-    }
-    kent_parts_find(m, passes, part);
-    mark_known(eq, part, known);
-    for (size_t n = 0; n < eq->nodes && status == KENT_OK; n++) {
-        if (!known[part[n]]) status = tell_unknown(eq, part, n, err);
-    }
-done:
-    free(part);
-    free(known);
-    free(passes);
-    return status;
-}
-
 /* ---- solving --------------------------------------------------------------------- */
 
 static const char *stop_text(kent_stop stop)
 {
     switch (stop) {
     case KENT_STOP_CONVERGED:
-        return "outflows kept switching between part and all of their flow";
+        return "it was found";
     case KENT_STOP_STALLED:
         return "the line search stalled";
     case KENT_STOP_LIMIT:
@@ -192,9 +121,31 @@ static void fill_report(const kent_equations *eq, const kent_newton_end *end,
     }
 }
 
-static kent_status tell_failure(const kent_model *m, const kent_steady_report *r,
-                                kent_error *err)
+/* The valve, outflow or device behind a link. */
+static const char *link_name(const kent_equations *eq, size_t link)
 {
+    const kent_model *m = eq->model;
+    if (link < eq->first_outflow) return m->valves[link].id;
+    if (link < eq->first_device) {
+        return m->points[m->outflows[link - eq->first_outflow].point].id;
+    }
+    if (link < eq->first_standing) return m->devices[link - eq->first_device].id;
+    return m->pumps[link - eq->first_standing].id;
+}
+
+/* Along which span or at which device a head equation is left open. */
+static const char *gap_name(const kent_equations *eq, size_t equation)
+{
+    const kent_model *m = eq->model;
+    if (equation < eq->nodes) return node_name(m, (int)equation);
+    if (equation < eq->nodes + eq->spans) return m->spans[equation - eq->nodes].id;
+    return equation < eq->size ? link_name(eq, equation - eq->nodes - eq->spans) : "";
+}
+
+static kent_status tell_failure(const kent_equations *eq, const kent_newton_end *end,
+                                const kent_steady_report *r, kent_error *err)
+{
+    const kent_model *m = eq->model;
     const bool at_node = r->worst_node >= 0;
     const bool at_span = r->worst_span >= 0;
     return kent_error_set(
@@ -203,36 +154,75 @@ static kent_status tell_failure(const kent_model *m, const kent_steady_report *r
         "m3/s%s%s; worst head gap %.3g m %s%s",
         stop_text(r->stop), r->iterations, r->worst_imbalance,
         at_node ? " at point " : "", at_node ? node_name(m, r->worst_node) : "",
-        r->worst_head_gap, at_span ? "along " : "at a device",
-        at_span ? m->spans[r->worst_span].id : "");
+        r->worst_head_gap, at_span ? "along " : "at ", gap_name(eq, end->head_gap_at));
 }
 
-/* Newton's method for given laws of the outflows, then laws for what it found, until
- * both agree. */
+static kent_status tell_switching(const kent_equations *eq, size_t which,
+                                  int iterations, kent_error *err)
+{
+    /* unreached: networks that do so are too large and odd for a test */
+    return kent_error_set(err, KENT_E_SOLVE, "",
+                          "no steady state was found: after %d iterations %s still "
+                          "switches between all, part and none of its flow",
+                          iterations, link_name(eq, which));
+}
+
+/* Puts links under the laws that the solution x calls for. In late rounds only the
+ * first one that is found changes, looking from another one each time, so that they
+ * cannot chase each other for ever. Returns whether any changed; one of them is link
+ * *which. */
+static bool switch_laws(kent_equations *eq, const double *x, int round, size_t *which)
+{
+    const size_t outflows = eq->model->outflow_count;
+    const size_t count = outflows + eq->model->device_count;
+    const bool one = round >= ROUNDS_TOGETHER;
+    bool any = false;
+
+    for (size_t k = 0; k < count && !(one && any); k++) {
+        const size_t i = ((size_t)round * STRIDE + k) % count;
+        const bool changed = i < outflows ? kent_outlet_switch(eq, x, i)
+                                          : kent_duty_switch(eq, x, i - outflows);
+        if (!changed) continue;
+        any = true;
+        *which = eq->first_outflow + i;
+    }
+    return any;
+}
+
+/* Newton's method for given laws of links, then laws for what it found, until both
+ * agree. */
 static kent_status settle(kent_equations *eq, double *x, kent_steady_report *report,
                           kent_error *err)
 {
     kent_newton *nw = NULL;
     kent_newton_end end = {0};
     int iterations = 0;
-    size_t changed = 1;
+    bool changed = true;
+    size_t which = 0;
+    unsigned char *opened = kent_alloc(eq->links, sizeof *opened);
 
     kent_status status = kent_newton_new(eq, &nw, err);
+    if (!opened) status = kent_error_nomem(err);
     if (status != KENT_OK) goto done;
     for (int round = 0; round < ROUNDS && changed; round++) {
         status = kent_newton_solve(nw, x, &end, err);
         if (status != KENT_OK) goto done;
         iterations += end.iterations;
         if (end.stop != KENT_STOP_CONVERGED) break;
-        changed = kent_outlet_switch(eq, x, round >= ROUNDS_TOGETHER);
+        changed = switch_laws(eq, x, round, &which);
+        if (changed) status = kent_known_restore(eq, opened, err);
+        if (status != KENT_OK) goto done;
     }
     end.iterations = iterations;
     fill_report(eq, &end, report);
-    if (end.stop != KENT_STOP_CONVERGED || changed) {
-        status = tell_failure(eq->model, report, err);
+    if (end.stop != KENT_STOP_CONVERGED) {
+        status = tell_failure(eq, &end, report, err);
+    } else if (changed) {
+        status = tell_switching(eq, which, iterations, err);
     }
 done:
     kent_newton_free(nw);
+    free(opened);
     return status;
 }
 
@@ -270,7 +260,10 @@ static kent_status take_result(const kent_equations *eq, const double *x,
     memcpy(s->node_head, x, eq->nodes * sizeof *x);
     memcpy(s->span_flow, x + eq->nodes, eq->spans * sizeof *x);
     memcpy(s->valve_flow, link, m->valve_count * sizeof *x);
-    memcpy(s->outflow, link + m->valve_count, m->outflow_count * sizeof *x);
+    memcpy(s->outflow, link + eq->first_outflow, m->outflow_count * sizeof *x);
+    for (size_t i = 0; i < m->device_count; i++) {
+        s->device_flow[i] = kent_duty_flow(eq, x, i);
+    }
     for (size_t i = 0; i < m->valve_count; i++) {
         const kent_valve *v = &m->valves[i];
         s->valve_capacity[i] = v->capacity;
@@ -298,7 +291,7 @@ kent_status kent_steady_solve(const kent_model *m, kent_steady **out, kent_error
         if (status != KENT_OK) goto done;
         status = kent_equations_new(m, &eq, err);
         if (status != KENT_OK) goto done;
-        status = check_known(eq, err);
+        status = kent_known_check(eq, err);
         if (status != KENT_OK) goto done;
         x = kent_alloc(eq->size, sizeof *x);
         if (!x) {
@@ -307,6 +300,8 @@ kent_status kent_steady_solve(const kent_model *m, kent_steady **out, kent_error
         }
         kent_equations_start(eq, x);
         status = settle(eq, x, &s->report, err);
+        if (status != KENT_OK) goto done;
+        status = kent_duty_check(eq, x, err);
         if (status != KENT_OK) goto done;
         status = take_result(eq, x, s, err);
         if (status != KENT_OK) goto done;

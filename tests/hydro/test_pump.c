@@ -292,6 +292,22 @@ static void own_curve_and_table_join_without_a_jump(void **state)
     }
 }
 
+/* A flow so small that its angle is rounded to that of none. */
+static void a_breath_of_reverse_flow_changes_nothing(void **state)
+{
+    (void)state;
+    for (double ns = 15.0; ns < 290.0; ns += 7.3) {
+        const kent_pump_curve c = pump_of(ns, true);
+        const kent_pump_point none = kent_pump_at(&c, 0.0, c.rated_speed);
+        for (double q = 1e-30; q < 1e-14; q *= 10.0) {
+            const kent_pump_point back =
+                kent_pump_at(&c, -q * c.rated_flow, c.rated_speed);
+            assert_within(back.head, none.head, 1e-9 * c.rated_head);
+            assert_within(back.torque, none.torque, 1e-9 * c.rated_torque);
+        }
+    }
+}
+
 /* Where speed and flow turn the corner of Suter's angle */
 static void the_angle_closes_round(void **state)
 {
@@ -456,6 +472,7 @@ int main(void)
         cmocka_unit_test(the_laws_of_affinity_hold_everywhere),
         cmocka_unit_test(head_never_rises_with_flow_while_it_pumps),
         cmocka_unit_test(own_curve_and_table_join_without_a_jump),
+        cmocka_unit_test(a_breath_of_reverse_flow_changes_nothing),
         cmocka_unit_test(the_angle_closes_round),
         cmocka_unit_test(derivatives_are_those_of_differences),
         cmocka_unit_test(it_is_finite_everywhere),

@@ -22,6 +22,14 @@ enum {
     STATES,
     STATE_LEVELS,
     SCENARIO_STATES,
+    PUMPS,
+    CHECK_VALVES,
+    CONTROL_VALVES,
+    SURGE_TANKS,
+    ONE_WAY_TANKS,
+    AIR_VESSELS,
+    RELIEF_VALVES,
+    AIR_VALVES,
     LISTS
 };
 
@@ -192,6 +200,199 @@ int kent_build_valve(kent_build *b, const char *id, const char *at, double capac
     name(m->valves[i].id, id);
     return i;
 }
+
+/* ---- devices --------------------------------------------------------------------- */
+
+static int point_or_none(const kent_build *b, const char *id)
+{
+    return id ? point_named(b, id) : -1;
+}
+
+static kent_place device_place(size_t count)
+{
+    return (kent_place){0, 699 + (int)count};
+}
+
+int kent_build_pump(kent_build *b, const char *id, const char *at, const char *flow_to,
+                    double head_at_no_flow, double rated_flow, double rated_head)
+{
+    const double pi = 3.14159265358979323846;
+    kent_model *m = b->model;
+    m->pumps = one_more(b, PUMPS, m->pumps, &m->pump_count, sizeof *m->pumps);
+    kent_pump *p = &m->pumps[m->pump_count - 1];
+    *p = (kent_pump){.point = point_named(b, at),
+                     .flow_to = point_or_none(b, flow_to),
+                     .suction_level = (double)NAN,
+                     .in_parallel = 1,
+                     .running = 1,
+                     .inertia = 5.0,
+                     .check_delay = (double)NAN,
+                     .check_size = (double)NAN,
+                     .node = {-1, -1},
+                     .place = device_place(m->pump_count)};
+    const double fall = head_at_no_flow - rated_head; /* m, to the rated flow */
+    const double last = fmin(1.5, sqrt(0.9 * head_at_no_flow / fall));
+    p->curve = (kent_pump_curve){
+        .count = 3,
+        .flow = {0.0, rated_flow, last * rated_flow},
+        .head = {head_at_no_flow, rated_head, head_at_no_flow - fall * last * last},
+        .efficiency = {(double)NAN, (double)NAN, (double)NAN},
+        .rated_flow = rated_flow,
+        .rated_head = rated_head,
+        .rated_efficiency = 0.8,
+        .rated_speed = 1480.0 * pi / 30.0,
+        .stages = 1,
+        .suctions = 1};
+    name(p->id, id);
+    const char *wrong =
+        kent_pump_curve_complete(&p->curve, m->water.density, m->gravity);
+    if (wrong) fail_msg("pump \"%s\": %s", id, wrong);
+    return (int)m->pump_count - 1;
+}
+
+int kent_build_check_valve(kent_build *b, const char *id, const char *at,
+                           const char *flow_to)
+{
+    kent_model *m = b->model;
+    m->check_valves = one_more(b, CHECK_VALVES, m->check_valves, &m->check_valve_count,
+                               sizeof *m->check_valves);
+    kent_check_valve *v = &m->check_valves[m->check_valve_count - 1];
+    *v = (kent_check_valve){.point = point_named(b, at),
+                            .flow_to = point_or_none(b, flow_to),
+                            .size = 0.3,
+                            .loss = 1.0,
+                            .place = device_place(m->check_valve_count)};
+    name(v->id, id);
+    return (int)m->check_valve_count - 1;
+}
+
+int kent_build_control_valve(kent_build *b, const char *id, const char *at,
+                             const char *flow_to, kent_holds holds, double set_pressure)
+{
+    kent_model *m = b->model;
+    m->control_valves = one_more(b, CONTROL_VALVES, m->control_valves,
+                                 &m->control_valve_count, sizeof *m->control_valves);
+    kent_control_valve *v = &m->control_valves[m->control_valve_count - 1];
+    *v = (kent_control_valve){.point = point_named(b, at),
+                              .flow_to = point_or_none(b, flow_to),
+                              .holds = holds,
+                              .set_pressure = set_pressure,
+                              .size = 0.3,
+                              .capacity = 0.1,
+                              .opening_time = 10.0,
+                              .closure_time = 10.0,
+                              .place = device_place(m->control_valve_count)};
+    name(v->id, id);
+    return (int)m->control_valve_count - 1;
+}
+
+int kent_build_surge_tank(kent_build *b, const char *id, const char *at, double area)
+{
+    kent_model *m = b->model;
+    m->surge_tanks = one_more(b, SURGE_TANKS, m->surge_tanks, &m->surge_tank_count,
+                              sizeof *m->surge_tanks);
+    kent_surge_tank *t = &m->surge_tanks[m->surge_tank_count - 1];
+    *t = (kent_surge_tank){.point = point_named(b, at),
+                           .next_to = -1,
+                           .area = area,
+                           .overflow_level = (double)INFINITY,
+                           .connection_diameter = 1.0,
+                           .node = -1,
+                           .place = device_place(m->surge_tank_count)};
+    name(t->id, id);
+    return (int)m->surge_tank_count - 1;
+}
+
+int kent_build_one_way_tank(kent_build *b, const char *id, const char *at, double area,
+                            double level)
+{
+    kent_model *m = b->model;
+    m->one_way_tanks = one_more(b, ONE_WAY_TANKS, m->one_way_tanks,
+                                &m->one_way_tank_count, sizeof *m->one_way_tanks);
+    kent_one_way_tank *t = &m->one_way_tanks[m->one_way_tank_count - 1];
+    *t = (kent_one_way_tank){.point = point_named(b, at),
+                             .next_to = -1,
+                             .area = area,
+                             .level = level,
+                             .bottom_level = -(double)INFINITY,
+                             .connection_diameter = 0.3,
+                             .loss_out = 4.0,
+                             .node = -1,
+                             .place = device_place(m->one_way_tank_count)};
+    name(t->id, id);
+    return (int)m->one_way_tank_count - 1;
+}
+
+int kent_build_air_vessel(kent_build *b, const char *id, const char *at,
+                          double total_volume, double gas_volume)
+{
+    kent_model *m = b->model;
+    m->air_vessels = one_more(b, AIR_VESSELS, m->air_vessels, &m->air_vessel_count,
+                              sizeof *m->air_vessels);
+    kent_air_vessel *v = &m->air_vessels[m->air_vessel_count - 1];
+    *v = (kent_air_vessel){.point = point_named(b, at),
+                           .next_to = -1,
+                           .total_volume = total_volume,
+                           .gas_volume = gas_volume,
+                           .polytropic_exponent = 1.2,
+                           .water_level = (double)NAN,
+                           .area = (double)INFINITY,
+                           .connection_diameter = 0.3,
+                           .loss_in = 12.0,
+                           .loss_out = 5.0,
+                           .node = -1,
+                           .place = device_place(m->air_vessel_count)};
+    name(v->id, id);
+    return (int)m->air_vessel_count - 1;
+}
+
+int kent_build_relief_valve(kent_build *b, const char *id, const char *at,
+                            double set_pressure, double capacity)
+{
+    kent_model *m = b->model;
+    const int point = point_named(b, at);
+    m->relief_valves = one_more(b, RELIEF_VALVES, m->relief_valves,
+                                &m->relief_valve_count, sizeof *m->relief_valves);
+    kent_relief_valve *v = &m->relief_valves[m->relief_valve_count - 1];
+    *v = (kent_relief_valve){.point = point,
+                             .next_to = -1,
+                             .set_pressure = set_pressure,
+                             .full_open_pressure = 1.1 * set_pressure,
+                             .low_set_pressure = (double)NAN,
+                             .hold_time = (double)NAN,
+                             .size = 0.2,
+                             .capacity = capacity,
+                             .closure_time = 20.0,
+                             .discharge_level = m->points[point].at.z,
+                             .node = -1,
+                             .place = device_place(m->relief_valve_count)};
+    name(v->id, id);
+    return (int)m->relief_valve_count - 1;
+}
+
+int kent_build_air_valve(kent_build *b, const char *id, const char *at,
+                         double admission_orifice, double release_orifice)
+{
+    kent_model *m = b->model;
+    m->air_valves = one_more(b, AIR_VALVES, m->air_valves, &m->air_valve_count,
+                             sizeof *m->air_valves);
+    kent_air_valve *v = &m->air_valves[m->air_valve_count - 1];
+    *v = (kent_air_valve){.point = point_named(b, at),
+                          .next_to = -1,
+                          .in_parallel = 1,
+                          .admission_orifice = admission_orifice,
+                          .release_orifice = release_orifice,
+                          .admission_coefficient = 0.6,
+                          .release_coefficient = 0.6,
+                          .switch_pressure = (double)NAN,
+                          .switched_orifice = (double)NAN,
+                          .node = -1,
+                          .place = device_place(m->air_valve_count)};
+    name(v->id, id);
+    return (int)m->air_valve_count - 1;
+}
+
+/* ---- scenarios ------------------------------------------------------------------- */
 
 int kent_build_scenario(kent_build *b, const char *id, double duration)
 {

@@ -21,7 +21,7 @@
 
 #include "kent_model.h"
 
-enum { KENT_BUILD_LISTS = 15 };
+enum { KENT_BUILD_LISTS = 23 };
 
 typedef struct kent_build {
     kent_model *model;
@@ -54,6 +54,35 @@ int kent_build_outflow(kent_build *b, const char *at, double flow);      /* m3/s
  * discharge_level m, NAN: in line. Size: 1 m until changed. */
 int kent_build_valve(kent_build *b, const char *id, const char *at, double capacity,
                      double discharge_level);
+
+/* Devices, with what is common (in brackets) until changed in b->model; flow_to and
+ * next_to: the next point, or NULL. Their lines are 700 + their index.
+ *
+ * A pump by three points of a parabola: head at no flow, rated flow and head, and as
+ * much beyond (efficiency 0.8, 1480 rpm, one unit, it runs, inertia 5 kg m2, no check
+ * valve; in line: set suction_level otherwise). */
+int kent_build_pump(kent_build *b, const char *id, const char *at, const char *flow_to,
+                    double head_at_no_flow, double rated_flow, double rated_head);
+int kent_build_check_valve(kent_build *b, const char *id, const char *at,
+                           const char *flow_to); /* 300 mm, K 1, ideal */
+/* Pa (300 mm, full opening 0.1 m^2.5/s, 10 s for the stroke). */
+int kent_build_control_valve(kent_build *b, const char *id, const char *at,
+                             const char *flow_to, kent_holds holds,
+                             double set_pressure);
+int kent_build_surge_tank(kent_build *b, const char *id, const char *at,
+                          double area); /* bottom 0, no overflow, 1 m, no losses */
+int kent_build_one_way_tank(kent_build *b, const char *id, const char *at, double area,
+                            double level); /* never empty, 0.3 m, K 4 */
+/* Exponent 1.2, 300 mm, K in 12, out 5, level fixed at the point's. */
+int kent_build_air_vessel(kent_build *b, const char *id, const char *at,
+                          double total_volume, double gas_volume);
+/* Opens fully 10 % above set_pressure, Pa; 200 mm, discharges at the point's level,
+ * opens at once, closes in 20 s, does not anticipate. */
+int kent_build_relief_valve(kent_build *b, const char *id, const char *at,
+                            double set_pressure, double capacity);
+/* One, coefficients 0.6, no slam. */
+int kent_build_air_valve(kent_build *b, const char *id, const char *at,
+                         double admission_orifice, double release_orifice);
 
 int kent_build_scenario(kent_build *b, const char *id, double duration); /* s */
 
