@@ -161,6 +161,7 @@ double kent_atan2(double y, double x)
 {
     const double ay = fabs(y), ax = fabs(x);
     if (ax == 0.0 && ay == 0.0) return 0.0;
+    if (!(ax <= 1e300 && ay <= 1e300)) return atan2(y, x);
     pair angle = ay <= ax ? angle_of(ay, ax) : angle_of(ax, ay);
     if (ay > ax) {
         angle = (pair){HALF_PI.high - angle.high, HALF_PI.low - angle.low};

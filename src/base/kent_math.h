@@ -11,7 +11,7 @@ double kent_log(double x);
 double kent_pow(double x, double y);
 
 /* Angle of the direction (x, y) in radians, -pi .. pi, as libm's atan2 has it; within 2
- * ulp or 1e-300. Both finite; 0 where both are nil, whatever their signs. */
+ * ulp. 0 where both are nil, whatever their signs. Others above 1e300: libm's. */
 double kent_atan2(double y, double x);
 
 #endif

@@ -1,7 +1,8 @@
 #include "kent_device_internal.h"
 
 const kent_device_ops *const KENT_DEVICE_OPS[KENT_DEVICE_KINDS] = {
-    [KENT_DEVICE_PUMP] = NULL,
+    [KENT_DEVICE_PUMP] = &KENT_AT_PUMP,
+    [KENT_DEVICE_CHECK_VALVE] = &KENT_AT_CHECK_VALVE,
 };
 
 const kent_device_quantity *kent_device_quantities(kent_device_kind kind)

@@ -22,7 +22,7 @@
 #include "kent_schedule_internal.h"
 
 /* Bytes of a device's state between instants; its file asserts that its own fits. */
-enum { KENT_DEVICE_STATE = 512 };
+enum { KENT_DEVICE_STATE = 1152 };
 
 typedef struct kent_device_state {
     _Alignas(16) unsigned char bytes[KENT_DEVICE_STATE];
@@ -62,7 +62,7 @@ typedef struct kent_device_ops {
 
 extern const kent_device_ops KENT_AT_SURGE_TANK, KENT_AT_ONE_WAY_TANK,
     KENT_AT_AIR_VESSEL, KENT_AT_RELIEF_VALVE, KENT_AT_AIR_VALVE, KENT_AT_CONTROL_VALVE,
-    KENT_AT_BURST;
+    KENT_AT_BURST, KENT_AT_PUMP, KENT_AT_CHECK_VALVE;
 
 /* By kind; NULL: not in this version. */
 extern const kent_device_ops *const KENT_DEVICE_OPS[KENT_DEVICE_KINDS];

@@ -112,6 +112,8 @@ static void angles_of_the_axes_are_exact(void **state)
     assert_true(kent_atan2(-0.0, -1.0) == -pi);
     assert_true(kent_atan2(7.0, 7.0) == 0.25 * pi);
     assert_true(kent_atan2(7.0, -7.0) == 0.75 * pi);
+    assert_true(kent_atan2(INFINITY, 1.0) == 0.5 * pi);
+    assert_true(isnan(kent_atan2(NAN, 1.0)) && isnan(kent_atan2(1.0, NAN)));
 }
 
 int main(void)
