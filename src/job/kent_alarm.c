@@ -531,6 +531,36 @@ static void bearing_beyond_the_ground(const watch *w)
     kent_text_clear(&words);
 }
 
+/* ---- pumps ----------------------------------------------------------------------- */
+
+/* GD2 is four times the moment of inertia; about forty times where the weight in it was
+ * taken for newtons (4 g). The estimate itself is good to half and twice. */
+static void inertia_of_another_notation(const watch *w)
+{
+    static const double SUSPECT = 2.8; /* between twice and four times */
+    const kent_model *m = w->m;
+    found f = {0};
+    for (size_t i = 0; i < m->pump_count; i++) {
+        const kent_pump *p = &m->pumps[i];
+        const kent_pump_curve *c = &p->curve;
+        if (p->inertia_estimated) continue;
+        const double usual = kent_pump_inertia_estimate(
+            c->rated_torque * c->rated_speed, c->rated_speed);
+        const double times = p->inertia / usual;
+        if (times >= SUSPECT) find(&f, p->id, i, times);
+    }
+    if (f.count == 0) return;
+    kent_text words = {0};
+    kent_text_add(&words,
+                  "moment of inertia up to %.2g times what pumps of that power and "
+                  "speed usually have; GD2 is four times the moment of inertia: is it "
+                  "that, or is there a flywheel? Too much of it makes a trip look "
+                  "harmless",
+                  f.worst_off);
+    tell(w, &f, "pump", kent_text_of(&words));
+    kent_text_clear(&words);
+}
+
 /* ---- the list -------------------------------------------------------------------- */
 
 static const struct {
@@ -555,6 +585,7 @@ static const struct {
     {zones_at_two_places, true},
     {much_free_gas, true},
     {unlikely_cover, true},
+    {inertia_of_another_notation, true},
     {bearing_beyond_the_ground, false},
 };
 

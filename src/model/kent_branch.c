@@ -27,6 +27,11 @@ bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
                         "a valve stands there; give what branches off a point of its "
                         "own on the pipe");
     }
+    if (device.kind == KENT_SEAT_DEVICE) {
+        return complain(m, note, complaints,
+                        "a pump or valve stands there; give what branches off a point "
+                        "of its own on the pipe");
+    }
     if (device.kind == KENT_SEAT_LEVEL) {
         return complain(m, note, complaints,
                         "a fixed level stands there; give what branches off a point "

@@ -22,7 +22,7 @@ static const char *misplaced(const kent_layout *l, const kent_model *m, int poin
         return "a curve lies in the course of one pipe, where no other pipe meets it: "
                "name a point inside its route";
     }
-    if (l->device[point].kind != KENT_SEAT_FREE) {
+    if (l->device[point].kind != KENT_SEAT_FREE || l->beside[point]) {
         return "a device stands there, which is no place for a curve: give it a point "
                "of its own";
     }

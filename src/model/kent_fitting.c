@@ -126,12 +126,35 @@ static void order_legs(kent_site *site)
     }
 }
 
+/* The device in line or at the end; NULL: none. */
+static const kent_device *device_of(const kent_site *site)
+{
+    return site->device.kind == KENT_SEAT_DEVICE ? &site->m->devices[site->device.index]
+                                                 : NULL;
+}
+
+/* Whether something there closes against pressure. */
+static bool is_valve(const kent_site *site)
+{
+    const kent_device *d = device_of(site);
+    return site->device.kind == KENT_SEAT_VALVE || (d && d->kind != KENT_DEVICE_PUMP);
+}
+
+/* A pump in line with check valves is one where a note says so. */
+static bool may_be_valve(const kent_site *site)
+{
+    const kent_device *d = device_of(site);
+    return is_valve(site) || (d && d->node[0] >= 0 &&
+                              site->m->pumps[d->index].check_valve != KENT_CHECK_NONE);
+}
+
 /* What geometry and devices make of a point. */
 static int natural_type(const kent_site *site)
 {
     const kent_seat_kind device = site->device.kind;
-    if (device == KENT_SEAT_VALVE) return KENT_VALVE;
-    if (device == KENT_SEAT_LEVEL) return NO_FITTING; /* the pipe ends in a tank */
+    if (is_valve(site)) return KENT_VALVE;
+    if (device == KENT_SEAT_LEVEL) return NO_FITTING;  /* the pipe ends in a tank */
+    if (device == KENT_SEAT_DEVICE) return NO_FITTING; /* a pump, held by its base */
     const bool branch = site->branch.end != KENT_BRANCH_NONE;
     const bool hydrant = site->note && site->note->role == KENT_ROLE_HYDRANT;
     if (site->count == 1) {
@@ -206,13 +229,20 @@ static int settle_type(const kent_site *site)
         return type;
     }
     const kent_fitting_type asked = (kent_fitting_type)note->type;
-    const bool valve_here = site->device.kind == KENT_SEAT_VALVE;
-    if (valve_here != (asked == KENT_VALVE)) {
+    if (asked == KENT_VALVE ? !may_be_valve(site) : is_valve(site)) {
         kent_place_complain(m, note->place, site->complaints,
-                            valve_here ? "fitting at \"%s\": a valve stands there; "
-                                         "leave its type out"
-                                       : "fitting at \"%s\": no valve stands there; "
-                                         "add one to valves",
+                            is_valve(site)
+                                ? "fitting at \"%s\": a valve stands there; "
+                                  "leave its type out"
+                                : "fitting at \"%s\": no valve stands there; "
+                                  "add one to valves",
+                            id);
+        return NO_FITTING;
+    }
+    if (device_of(site) && site->count == 2 && asked != KENT_VALVE) {
+        kent_place_complain(m, note->place, site->complaints,
+                            "fitting at \"%s\": a pump stands there; its type may be "
+                            "\"valve\", for its check valve, or be left out",
                             id);
         return NO_FITTING;
     }
@@ -340,20 +370,22 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
     }
     if (!settle_directions(&site, (kent_fitting_type)type)) return false;
 
-    *out = (kent_fitting){.point = point,
-                          .type = (kent_fitting_type)type,
-                          .at = m->points[point].at,
-                          .station = l->station[point],
-                          .valve = type == KENT_VALVE ? site.device.index : -1,
-                          .curve_radius = (double)NAN,
-                          .curve_length = (double)NAN,
-                          .zone = zone_of(m, l, point),
-                          .role = note ? note->role : KENT_ROLE_NONE,
-                          .branch = site.branch,
-                          .obstacle_first = note ? note->obstacle_first : 0,
-                          .obstacle_count = note ? note->obstacle_count : 0,
-                          .port_count = site.count,
-                          .place = note ? note->place : m->points[point].place};
+    *out = (kent_fitting){
+        .point = point,
+        .type = (kent_fitting_type)type,
+        .at = m->points[point].at,
+        .station = l->station[point],
+        .valve = site.device.kind == KENT_SEAT_VALVE ? site.device.index : -1,
+        .device = type == KENT_VALVE && device_of(&site) ? site.device.index : -1,
+        .curve_radius = (double)NAN,
+        .curve_length = (double)NAN,
+        .zone = zone_of(m, l, point),
+        .role = note ? note->role : KENT_ROLE_NONE,
+        .branch = site.branch,
+        .obstacle_first = note ? note->obstacle_first : 0,
+        .obstacle_count = note ? note->obstacle_count : 0,
+        .port_count = site.count,
+        .place = note ? note->place : m->points[point].place};
     (void)snprintf(out->id, sizeof out->id, "%s", m->points[point].id);
     kent_fitting_describe_legs(out, ports, site.count);
     if (site.branch.end != KENT_BRANCH_NONE) {

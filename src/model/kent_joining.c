@@ -74,11 +74,12 @@ static size_t port_of_arm(const kent_joining *j, int fitting, kent_arm arm)
 }
 
 /* Where a pipe goes on past a point without a fitting: the other one of just two arms,
- * and no tank between. */
+ * and no tank or pump between. */
 static bool go_on(const kent_joining *j, int point, kent_arm came, kent_arm *out)
 {
     kent_arm arms[KENT_ARMS];
-    if (j->l->device[point].kind == KENT_SEAT_LEVEL) return false;
+    const kent_seat_kind seat = j->l->device[point].kind;
+    if (seat == KENT_SEAT_LEVEL || seat == KENT_SEAT_DEVICE) return false;
     if (kent_layout_arms(j->m, j->l, point, arms) != 2) return false;
     const bool first = arms[0].stop == came.stop && arms[0].leaves == came.leaves;
     *out = arms[first ? 1 : 0];

@@ -189,6 +189,7 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     status = kent_group_fittings(m, &layout, complaints);
     if (status != KENT_OK) goto done;
+    kent_devices_caution(m);
     status = kent_state_marches(m, complaints);
     if (status == KENT_OK) status = kent_state_levels(m);
     if (status == KENT_OK && m->cautions.failed) status = KENT_E_NOMEM;

@@ -675,7 +675,8 @@ typedef struct kent_fitting {
     double cover, water_table; /* m; NAN: not stated */
     double outside_diameter;   /* m, of its largest port */
     double weight;             /* N */
-    int valve;                 /* KENT_VALVE: which; else -1 */
+    int valve;                 /* KENT_VALVE: which of valves; -1 */
+    int device; /* KENT_VALVE: which of devices, where it is one of those; -1 */
     size_t port_first,
         port_count; /* into kent_model.ports. Bend and reducer: [0] upstream
                        by route; tee, wye: [0], [1] the run, [2] the branch. Group:
@@ -869,6 +870,10 @@ typedef struct kent_ground_here {
  * line between neighbouring points that both have one. What single points say of soil
  * and water is theirs alone. */
 kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chainage);
+
+/* Whether a KENT_VALVE may be shut with pressure on the side of one of its ports: what
+ * lets nothing back holds it on its delivery side alone. */
+bool kent_fitting_shuts(const kent_model *m, const kent_fitting *f, size_t port);
 
 /* m: ground to crown of a pipe of that outside diameter; NAN: the point has none. */
 double kent_point_cover(const kent_point *point, double outside_diameter);

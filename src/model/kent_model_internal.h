@@ -110,6 +110,7 @@ void kent_devices_place(const kent_model *m, kent_layout *l,
 kent_arm kent_device_delivery(const kent_model *m, const kent_layout *l,
                               const kent_device *d);
 void kent_devices_stand(kent_model *m, const kent_layout *l);
+void kent_devices_caution(kent_model *m); /* once fittings are listed */
 
 /* kent_devices_valid.c: as kent_model_is_valid, of devices and what moves them. */
 bool kent_devices_are_valid(const kent_model *m);

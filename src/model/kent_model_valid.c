@@ -220,7 +220,8 @@ static bool fittings_are_valid(const kent_model *m)
         const kent_fitting *f = &m->fittings[i];
         if (!is_index_or_none(f->point, m->point_count) ||
             !is_index_or_none(f->soil, m->soil_count) ||
-            !is_index_or_none(f->valve, m->valve_count) || f->port_count == 0 ||
+            !is_index_or_none(f->valve, m->valve_count) ||
+            !is_index_or_none(f->device, m->device_count) || f->port_count == 0 ||
             !is_part(f->port_first, f->port_count, m->port_count) ||
             !is_part(f->member_first, f->member_count, m->member_count) ||
             !is_part(f->obstacle_first, f->obstacle_count, m->obstacle_count) ||

@@ -80,7 +80,7 @@ static double flow_out_of(const kent_model *m, const kent_steady *s, int node)
 }
 
 /* Steady flow of one device in every state shown: by its place in its list. */
-typedef enum device { LEVEL, OUTFLOW, VALVE } device;
+typedef enum device { LEVEL, OUTFLOW, VALVE, OTHER } device;
 
 static void add_flows(const kent_view *v, kent_table *t, device what, size_t i)
 {
@@ -98,6 +98,9 @@ static void add_flows(const kent_view *v, kent_table *t, device what, size_t i)
                 break;
             case VALVE:
                 flow = s->valve_flow[i];
+                break;
+            case OTHER:
+                if (s->device_flow) flow = s->device_flow[i];
                 break;
             }
         }
@@ -130,6 +133,13 @@ static void fill_devices(const kent_view *v, kent_table *t)
         kent_table_cell(t, "%s open", kent_shown_number(a->opening, 2).text);
         add_flows(v, t, VALVE, i);
     }
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_device *d = &m->devices[i];
+        kent_view_word(t, kent_view_point(m, d->point));
+        kent_table_cell(t, "%s %s", kent_device_word(d->kind), d->id);
+        kent_view_word(t, "");
+        add_flows(v, t, OTHER, i);
+    }
 }
 
 static void say_devices(const kent_view *v)
@@ -137,7 +147,8 @@ static void say_devices(const kent_view *v)
     const kent_model *m = v->model;
     enum { FIXED = 3 };
     const size_t states = kent_view_states(v);
-    const size_t rows = m->fixed_level_count + m->outflow_count + m->valve_count;
+    const size_t rows =
+        m->fixed_level_count + m->outflow_count + m->valve_count + m->device_count;
     kent_column *columns = kent_alloc(FIXED + states, sizeof *columns);
     kent_shown *names = kent_alloc(states, sizeof *names);
     if (!columns || !names) {
@@ -146,8 +157,10 @@ static void say_devices(const kent_view *v)
     }
     if (!kent_view_whole(v, rows)) {
         kent_text_add(
-            v->out, "\n%zu fixed levels, %zu outflows, %zu valves; --wide lists them\n",
-            m->fixed_level_count, m->outflow_count, m->valve_count);
+            v->out,
+            "\n%zu fixed levels, %zu outflows, %zu valves, %zu other devices; --wide "
+            "lists them\n",
+            m->fixed_level_count, m->outflow_count, m->valve_count, m->device_count);
         goto done;
     }
     columns[0] = (kent_column){"at", "", KENT_ALIGN_LEFT, true};
@@ -159,7 +172,10 @@ static void say_devices(const kent_view *v)
     }
     kent_table t = {.columns = columns, .column_count = FIXED + states};
     fill_devices(v, &t);
-    kent_view_finish(v, "Levels, outflows and valves", &t);
+    kent_view_finish(v,
+                     m->device_count > 0 ? "Levels, outflows, valves and devices"
+                                         : "Levels, outflows and valves",
+                     &t);
 done:
     free(names);
     free(columns);

@@ -47,6 +47,9 @@ void kent_view_say(const kent_view *v, const char *lead, kent_text *words);
 
 const char *kent_view_point(const kent_model *m, int point);
 
+/* One device as the case has it: "air vessel VES1: 4.50 m3 of gas in 10.00 m3 ...". */
+void kent_view_add_device(const kent_view *v, const kent_device *d, kent_text *out);
+
 /* ---- the parts ------------------------------------------------------------------- */
 
 void kent_view_plan(const kent_view *v);   /* the main, point by point */

@@ -25,6 +25,11 @@ static void say_state(const kent_view *v, const kent_state *s)
                       said(v, KENT_LENGTH, l->level, &level));
     }
     if (s->level_count == 0) kent_text_add(&words, " levels as they stand,");
+    for (size_t i = 0; i < s->running_count; i++) {
+        const kent_state_running *r = &m->state_running[s->running_first + i];
+        kent_text_add(&words, " %d of %d units of pump %s run,", r->running,
+                      m->pumps[r->pump].in_parallel, m->pumps[r->pump].id);
+    }
     kent_text_add(&words, " outflows × %.2f, roughness × %.2f.", s->outflow_factor,
                   s->roughness_factor);
     kent_view_say(v, "-  ", &words);
@@ -78,10 +83,9 @@ static double start_of(const kent_model *m, const kent_scenario *s, size_t k)
         return m->valves[e->target].opening;
     case KENT_EVENT_OUTFLOW:
         return m->outflows[e->target].flow;
-    case KENT_EVENT_PUMP:
-        return m->pumps[e->target].running > 0 ? 1.0 : 0.0;
     case KENT_EVENT_FIXED_LEVEL:
         return m->fixed_levels[e->target].level;
+    case KENT_EVENT_PUMP: /* told in words of its own */
     case KENT_EVENT_BURST:
         break;
     }
@@ -99,8 +103,7 @@ static void add_value(const kent_view *v, kent_event_kind kind, double value,
     case KENT_EVENT_OUTFLOW:
         kent_text_add(out, "%s", said(v, KENT_FLOW, value, &s));
         break;
-    case KENT_EVENT_PUMP:
-        kent_text_add(out, "%.3g of its rated speed", value);
+    case KENT_EVENT_PUMP: /* told in words of its own */
         break;
     case KENT_EVENT_FIXED_LEVEL:
         kent_text_add(out, "%s", said(v, KENT_LENGTH, value, &s));
@@ -108,6 +111,34 @@ static void add_value(const kent_view *v, kent_event_kind kind, double value,
     case KENT_EVENT_BURST:
         kent_text_add(out, "%s", said(v, KENT_AREA, value, &s));
         break;
+    }
+}
+
+/* "2 units of pump PS trip, ..." */
+static void add_pump_event(const kent_view *v, const kent_event *e, kent_text *out)
+{
+    static const char *const VERBS[] = {[KENT_TRIP] = "lose power",
+                                        [KENT_START] = "start",
+                                        [KENT_STOP] = "stop",
+                                        [KENT_RAMP] = "change speed"};
+    const kent_pump *p = &v->model->pumps[e->target];
+    if (e->how_many > 0) {
+        kent_text_add(out, "%d of %d units of pump %s %s", e->how_many, p->in_parallel,
+                      p->id, VERBS[e->action]);
+    } else {
+        kent_text_add(out, "all units of pump %s that %s %s", p->id,
+                      e->action == KENT_START ? "stand still" : "run",
+                      VERBS[e->action]);
+    }
+    if (e->action == KENT_RAMP) kent_text_add(out, " to %.3g of the rated one", e->to);
+    if (e->action != KENT_TRIP) kent_text_add(out, " in %.4g s", e->ramp_time);
+}
+
+static void add_law(const kent_event *e, kent_text *out)
+{
+    kent_text_add(out, " by a law of %zu points", e->law_count);
+    if (!isnan(e->period)) {
+        kent_text_add(out, " that begins again every %.6g s", e->period);
     }
 }
 
@@ -126,26 +157,46 @@ static void add_event(const kent_view *v, const kent_scenario *s, size_t k,
                       kent_view_point(m, m->outflows[e->target].point));
         break;
     case KENT_EVENT_PUMP:
-        kent_text_add(out, "pump %s goes from ", m->pumps[e->target].id);
-        break;
+        add_pump_event(v, e, out);
+        kent_text_add(out, ", from %.4g s on", e->start_time);
+        return;
     case KENT_EVENT_FIXED_LEVEL:
         kent_text_add(out, "the level at %s goes from ",
                       kent_view_point(m, m->fixed_levels[e->target].point));
         break;
     case KENT_EVENT_BURST:
-        kent_text_add(out, "a burst at %s opens from ",
-                      kent_view_point(m, m->bursts[e->target].point));
+        kent_text_add(out, "a burst at %s (coefficient %.2f) opens from ",
+                      kent_view_point(m, m->bursts[e->target].point), e->coefficient);
         break;
     }
     add_value(v, e->kind, start_of(m, s, k), out);
     kent_text_add(out, " to ");
     add_value(v, e->kind, end_of(m, e), out);
     if (e->law_count > 0) {
-        kent_text_add(out, " by a law of %zu points", e->law_count);
+        add_law(e, out);
     } else {
         kent_text_add(out, " in %.4g s", e->ramp_time);
     }
     kent_text_add(out, ", from %.4g s on", e->start_time);
+}
+
+/* What it takes over, what it leaves out and what it is for. */
+static void add_kin(const kent_model *m, const kent_scenario *s, kent_text *out)
+{
+    if (s->same_as >= 0) {
+        kent_text_add(out, "; as in %s", m->scenarios[s->same_as].id);
+    }
+    for (size_t i = 0; i < s->without_count; i++) {
+        const kent_left_out *left = &m->without[s->without_first + i];
+        for (size_t d = 0; d < m->device_count; d++) {
+            if (m->devices[d].kind != left->kind) continue;
+            if (m->devices[d].index != left->index) continue;
+            kent_text_add(out, "%s%s", i > 0 ? ", " : "; without ", m->devices[d].id);
+        }
+    }
+    if (s->for_comparison) {
+        kent_text_add(out, "; for comparison, it decides no load case and no limit");
+    }
 }
 
 static void add_start(const kent_view *v, const kent_scenario *s, kent_text *out)
@@ -173,6 +224,7 @@ void kent_view_scenarios(const kent_view *v)
         kent_text_add(&words, "%s: %s%s%s, %.4g s", s->id, titled ? s->title : "",
                       titled ? "; " : "", kent_class_word(s->class_of), s->duration);
         add_start(v, s, &words);
+        add_kin(m, s, &words);
         for (size_t k = 0; k < s->event_count; k++) {
             kent_text_add(&words, "; ");
             add_event(v, s, k, &words);

@@ -15,7 +15,9 @@ typedef struct plan {
     int *group;   /* [point_count] the fitting it is a member of; -1 */
     int *note;    /* [point_count] -1: nothing said */
     int *pipe;    /* [point_count] pipe under which the point is told; -1: not yet */
-    int *level, *outflow, *valve; /* [point_count] the first device; -1: none */
+    int *level, *outflow, *valve; /* [point_count] what stands there; -1: none */
+    int *device; /* [point_count] the first of kent_model.devices; -1: none */
+    int *next;   /* [device_count] the next one at the same point; -1 */
 } plan;
 
 static void fill_none(int *list, size_t count)
@@ -34,14 +36,16 @@ static void plan_clear(plan *p)
     free(p->level);
     free(p->outflow);
     free(p->valve);
+    free(p->device);
+    free(p->next);
 }
 
 /* 0, or -1: no memory. */
 static int plan_fill(plan *p)
 {
     const kent_model *m = p->view->model;
-    int **const lists[] = {&p->fitting, &p->group,   &p->note, &p->pipe,
-                           &p->level,   &p->outflow, &p->valve};
+    int **const lists[] = {&p->fitting, &p->group,   &p->note,  &p->pipe,
+                           &p->level,   &p->outflow, &p->valve, &p->device};
     for (size_t i = 0; i < sizeof lists / sizeof lists[0]; i++) {
         *lists[i] = kent_alloc(m->point_count, sizeof **lists[i]);
         if (!*lists[i]) return -1;
@@ -65,6 +69,12 @@ static int plan_fill(plan *p)
     }
     for (size_t i = 0; i < m->valve_count; i++) {
         p->valve[m->valves[i].point] = (int)i;
+    }
+    p->next = kent_alloc(m->device_count, sizeof *p->next);
+    if (!p->next) return -1;
+    for (size_t i = m->device_count; i-- > 0;) { /* so that each list rises */
+        p->next[i] = p->device[m->devices[i].point];
+        p->device[m->devices[i].point] = (int)i;
     }
     return 0;
 }
@@ -225,7 +235,8 @@ static void add_branch(const plan *p, const kent_branch *b, kent_text *out)
 static void add_fitting(const plan *p, const kent_fitting *f, kent_text *out)
 {
     const kent_model *m = p->view->model;
-    const bool valve = f->type == KENT_VALVE && f->valve >= 0; /* told already */
+    const bool valve =
+        f->type == KENT_VALVE && (f->valve >= 0 || f->device >= 0); /* told already */
     kent_text_add(out, "%s",
                   valve ? "pushed along the pipe when shut"
                         : kent_shown_fitting(m, f, p->view->units, KENT_ROOMY).text);
@@ -372,6 +383,10 @@ static void add_stop(plan *p, size_t pipe, size_t stop, kent_text *words)
         add_outflow(p, &m->outflows[p->outflow[point]], words);
     }
     if (p->valve[point] >= 0) add_valve(p, &m->valves[p->valve[point]], words);
+    for (int d = p->device[point]; d >= 0; d = p->next[d]) {
+        kent_view_add_device(p->view, &m->devices[d], words);
+        kent_text_add(words, "; ");
+    }
     if (p->fitting[point] >= 0) {
         add_fitting_and_ground(p, &m->fittings[p->fitting[point]], words);
         return;

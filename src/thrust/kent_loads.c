@@ -204,7 +204,7 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
         if (r->slots[i].started) loads_add_march(r, index, i, loads);
     }
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
-        loads_add_closed(r, test, index, i, loads);
+        if (kent_fitting_shuts(m, f, i)) loads_add_closed(r, test, index, i, loads);
     }
     if (may_be_extended(m, f)) loads_add_extended(r, test, index, loads);
     for (size_t i = 0; i < loads->count; i++) {
