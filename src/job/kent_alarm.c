@@ -1,6 +1,7 @@
 #include "kent_alarm.h"
 
 #include "kent_bearing.h"
+#include "kent_duty_alarm.h"
 #include "kent_said.h"
 #include "kent_site_test.h"
 
@@ -598,4 +599,5 @@ void kent_alarms_raise(const kent_model *m, kent_steady *const *steadies, size_t
             ALARMS[i].look(&w);
         }
     }
+    kent_duty_alarms_raise(m, steadies, count, cautions);
 }

@@ -191,6 +191,23 @@ static json_t *steady_pipe(const kent_results *r, const kent_steady *s, size_t i
     return object_done(o);
 }
 
+/* A pump's row holds its duty too. */
+static json_t *steady_device(const kent_model *m, const kent_steady *s, size_t index)
+{
+    const kent_device *d = &m->devices[index];
+    kent_object o = object_new();
+    set(&o, "id", words(d->id));
+    set(&o, "kind", words(kent_device_word(d->kind)));
+    set(&o, "flow_m3s", real(s->device_flow[index]));
+    if (d->kind == KENT_DEVICE_PUMP) {
+        const kent_pump_duty duty = kent_steady_pump(s, index);
+        set(&o, "running", json_integer(duty.running));
+        set(&o, "lift_m", real(duty.lift));
+        set(&o, "power_W", real(duty.power));
+    }
+    return object_done(o);
+}
+
 /* head: room for the points' heads. */
 static void put_state(kent_writer *w, size_t state, double *head)
 {
@@ -206,6 +223,10 @@ static void put_state(kent_writer *w, size_t state, double *head)
     open_list(w, "],\n\"pipes\": [");
     for (size_t i = 0; i < m->span_count; i++) {
         put_element(w, steady_pipe(w->results, s, i));
+    }
+    open_list(w, "],\n\"devices\": [");
+    for (size_t i = 0; i < m->device_count; i++) {
+        put_element(w, steady_device(m, s, i));
     }
     put_text(w, "]}");
 }

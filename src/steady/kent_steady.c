@@ -362,6 +362,24 @@ kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
     return status;
 }
 
+kent_pump_duty kent_steady_pump(const kent_steady *s, size_t device)
+{
+    const kent_device *d = &s->model->devices[device];
+    assert(d->kind == KENT_DEVICE_PUMP);
+    const kent_pump *p = &s->model->pumps[d->index];
+    const double before = d->node[0] >= 0 ? s->node_head[d->node[0]] : p->suction_level;
+    kent_pump_duty duty = {.running = p->running,
+                           .flow = s->device_flow[device],
+                           .lift = s->node_head[d->node[1]] - before};
+    if (p->running > 0) {
+        const double speed = p->curve.rated_speed;
+        const kent_pump_point at =
+            kent_pump_at(&p->curve, duty.flow / p->running, speed);
+        duty.power = p->running * at.torque * speed;
+    }
+    return duty;
+}
+
 double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
                         double chainage)
 {

@@ -50,6 +50,17 @@ void kent_steady_free_states(kent_steady **s, size_t count); /* and the list its
 kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
                                      kent_error *err);
 
+/* What a pump does in the steady state, all units that run together. */
+typedef struct kent_pump_duty {
+    int running;
+    double flow;  /* m3/s, through it in all */
+    double lift;  /* m, from suction (level) to delivery, behind its check valve */
+    double power; /* W at the shafts */
+} kent_pump_duty;
+
+/* device: index of a pump into kent_model.devices. */
+kent_pump_duty kent_steady_pump(const kent_steady *s, size_t device);
+
 /* m: piezometric head at a chainage of a span; a straight line between its ends. */
 double kent_steady_head(const kent_model *m, const kent_steady *s, int span,
                         double chainage);

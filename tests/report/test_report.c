@@ -364,6 +364,53 @@ static json_t *written(const kent_results *r)
     return root;
 }
 
+/* A station with a closed form: 70 m at no flow, 50 m of them left at its rated flow.
+ */
+static void a_pumps_duty_stands_in_the_steady_state(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_error err = {0};
+    kent_steady *steady = NULL;
+    kent_build_point(&b, "P", 0.0, 0.0, 10.0);
+    kent_build_point(&b, "R", 300.0, 0.0, 10.0);
+    kent_build_pipe(&b, "A", "P R", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 62.0);
+    const int p = kent_build_pump(&b, "PS", "P", NULL, 70.0, 0.08, 50.0);
+    b.model->pumps[p].suction_level = 12.0;
+    b.model->pumps[p].in_parallel = b.model->pumps[p].running = 2;
+    kent_build_relief_valve(&b, "RV", "P", 9e5, 0.01);
+    kent_build_derive(&b);
+    if (kent_steady_solve(b.model, &steady, &err)) fail_msg("%s", err.what);
+    kent_loads_result loads = {
+        .test = {.rule = KENT_TEST_FIXED, .pressure = (double)NAN}};
+    kent_restraints restraints = {0};
+    kent_results r = {.model = b.model,
+                      .steadies = &steady,
+                      .steady_count = 1,
+                      .loads = &loads,
+                      .restraints = &restraints};
+    b.model->fitting_count = 0; /* only what flows is looked at */
+    json_t *all = written(&r);
+    const json_t *flow = json_array_get(json_object_get(all, "steady"), 0);
+    const json_t *devices = json_object_get(flow, "devices");
+    const json_t *pump = json_array_get(devices, 0),
+                 *valve = json_array_get(devices, 1);
+    assert_int_equal(json_array_size(devices), 2);
+    assert_string_equal(json_string_value(json_object_get(pump, "id")), "PS");
+    assert_string_equal(json_string_value(json_object_get(pump, "kind")), "pump");
+    assert_int_equal(json_integer_value(json_object_get(pump, "running")), 2);
+    assert_close(json_number_value(json_object_get(pump, "flow_m3s")), 0.16, 1e-9);
+    assert_close(json_number_value(json_object_get(pump, "lift_m")), 50.0, 1e-9);
+    /* rho g Q H over the rated efficiency of 0.8 */
+    assert_close(json_number_value(json_object_get(pump, "power_W")),
+                 9806.65 * 0.16 * 50.0 / 0.8, 1e-6);
+    assert_true(json_number_value(json_object_get(valve, "flow_m3s")) == 0.0);
+    json_decref(all);
+    kent_steady_free(steady);
+    kent_build_clear(&b);
+}
+
 static void every_key_of_the_results_is_there(void **state)
 {
     (void)state;
@@ -696,6 +743,7 @@ int main(void)
         cmocka_unit_test(what_cannot_be_held_stands_first),
         cmocka_unit_test(every_line_of_a_hand_calculation_can_be_worked_out_again),
         cmocka_unit_test(check_lists_all_that_was_understood),
+        cmocka_unit_test(a_pumps_duty_stands_in_the_steady_state),
         cmocka_unit_test(every_key_of_the_results_is_there),
         cmocka_unit_test(legs_and_faces_have_their_keys),
         cmocka_unit_test(a_number_comes_back_with_every_bit),

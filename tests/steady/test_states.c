@@ -173,6 +173,47 @@ static void a_stated_flow_is_that_of_the_first_state(void **state)
     clear(&s);
 }
 
+/* Two units, one, none: 10 + 60 - 4000 (q/n)2 = 40 + r q2 (a parabola through two
+ * points of the curve against a quadratic main). */
+static void each_state_has_its_own_units_running(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "P", 0.0, 0.0, 5.0);
+    kent_build_point(&b, "R", 2000.0, 0.0, 5.0);
+    const int a = kent_build_pipe(&b, "A", "P R", 0.3, 1000.0);
+    b.model->pipes[a].friction = KENT_DARCY_FIXED;
+    b.model->pipes[a].friction_coefficient = 0.02;
+    kent_build_fixed_level(&b, "R", 40.0);
+    const int p = kent_build_pump(&b, "PS", "P", NULL, 60.0, 0.1, 20.0);
+    kent_pump *pump = &b.model->pumps[p];
+    pump->curve.count = 2;
+    assert_null(kent_pump_curve_complete(&pump->curve, 1000.0, G));
+    pump->suction_level = 10.0;
+    pump->in_parallel = pump->running = 2;
+    pump->check_valve = KENT_CHECK_IDEAL;
+    kent_state_running running[2] = {{p, 1}, {p, 0}};
+    kent_build_state(&b, "both");
+    for (int i = 0; i < 2; i++) {
+        const int k = kent_build_state(&b, i ? "none" : "one");
+        b.model->states[k].running_first = (size_t)i;
+        b.model->states[k].running_count = 1;
+    }
+    b.model->state_running = kent_alloc(2, sizeof running[0]);
+    assert_non_null(b.model->state_running);
+    memcpy(b.model->state_running, running, sizeof running);
+    b.model->state_running_count = 2;
+    solved s = solve(b);
+    const double area = PI * 0.09 / 4.0;
+    const double r = 0.02 * 2000.0 / 0.3 / (2.0 * G * area * area);
+    assert_close(s.of[0]->device_flow[0], sqrt(30.0 / (r + 1000.0)), 1e-9);
+    assert_close(s.of[1]->device_flow[0], sqrt(30.0 / (r + 4000.0)), 1e-9);
+    assert_true(s.of[2]->device_flow[0] == 0.0);
+    assert_int_equal(kent_steady_pump(s.of[1], 0).running, 1);
+    assert_true(kent_steady_pump(s.of[2], 0).power == 0.0);
+    clear(&s);
+}
+
 static void the_state_that_fails_is_named(void **state)
 {
     (void)state;
@@ -226,6 +267,7 @@ int main(void)
         cmocka_unit_test(the_coefficient_of_hazen_and_williams_is_divided),
         cmocka_unit_test(an_outflow_times_nothing_draws_nothing),
         cmocka_unit_test(a_stated_flow_is_that_of_the_first_state),
+        cmocka_unit_test(each_state_has_its_own_units_running),
         cmocka_unit_test(the_state_that_fails_is_named),
         cmocka_unit_test(any_allocation_may_fail),
     };

@@ -1,0 +1,84 @@
+#include "kent_duty_alarm.h"
+
+#include "kent_said.h"
+
+/* Share beyond the last flow of a curve from which that is worth saying. */
+static const double BEYOND = 1.001;
+
+/* Quantities in words, in the units that are shown. */
+static kent_said flow(const kent_model *m, double si)
+{
+    return kent_said_of(KENT_FLOW, m->units, si);
+}
+
+static kent_said length(const kent_model *m, double si)
+{
+    return kent_said_of(KENT_LENGTH, m->units, si);
+}
+
+static void look_at_pump(const kent_steady *s, size_t device, const char *name,
+                         kent_notes *cautions)
+{
+    const kent_model *m = s->model;
+    const kent_pump *p = &m->pumps[m->devices[device].index];
+    const kent_pump_curve *c = &p->curve;
+    const kent_pump_duty duty = kent_steady_pump(s, device);
+    const double last = c->flow[c->count - 1];
+
+    if (duty.running == 0) {
+        if (duty.flow == 0.0) return;
+        kent_notes_add(cautions,
+                       "pump %s: it stands still and %s pass through it %s; without a "
+                       "check valve it is an open pipe",
+                       name, flow(m, duty.flow < 0.0 ? -duty.flow : duty.flow).s,
+                       duty.flow < 0.0 ? "backwards" : "forwards");
+        return;
+    }
+    const double of_one = duty.flow / duty.running;
+    if (of_one == 0.0) {
+        kent_notes_add(
+            cautions,
+            "pump %s: it runs without delivering: it lifts %s at no flow and "
+            "%s are needed, so that its check valve is shut",
+            name, length(m, c->head[0]).s, length(m, duty.lift).s);
+    } else if (of_one > BEYOND * last) {
+        kent_notes_add(cautions,
+                       "pump %s: each unit passes %s, beyond the end of its curve at "
+                       "%s, where its head is only assumed; give more of the curve, or "
+                       "the main more resistance",
+                       name, flow(m, of_one).s, flow(m, last).s);
+    }
+    if (duty.running < p->in_parallel && p->check_valve == KENT_CHECK_NONE) {
+        kent_notes_add(cautions,
+                       "pump %s: %d of %d units stand and have no check valve, so that "
+                       "water runs back through them; count only those that are not "
+                       "shut off, or give it check_valve",
+                       name, p->in_parallel - duty.running, p->in_parallel);
+    }
+}
+
+static void look_at_device(const kent_steady *s, size_t device, const char *name,
+                           kent_notes *cautions)
+{
+    const kent_model *m = s->model;
+    const kent_device_kind kind = m->devices[device].kind;
+    if (kind == KENT_DEVICE_PUMP) look_at_pump(s, device, name, cautions);
+    if (kind == KENT_DEVICE_RELIEF_VALVE && s->device_flow[device] > 0.0) {
+        kent_notes_add(cautions,
+                       "relief valve %s: it passes %s in the steady state already; is "
+                       "its set_pressure right?",
+                       name, flow(m, s->device_flow[device]).s);
+    }
+}
+
+void kent_duty_alarms_raise(const kent_model *m, kent_steady *const *steadies,
+                            size_t count, kent_notes *cautions)
+{
+    for (size_t i = 0; i < m->device_count; i++) {
+        for (size_t k = 0; k < count; k++) {
+            if (!steadies[k]) continue;
+            const kent_name name = kent_name_in_state(m, m->devices[i].id, (int)k);
+            look_at_device(steadies[k], i, name.s, cautions);
+        }
+    }
+}
