@@ -2,7 +2,9 @@
 #ifndef KENT_HYDRO_H
 #define KENT_HYDRO_H
 
+#include "kent_air.h"
 #include "kent_friction.h"
+#include "kent_gas.h"
 #include "kent_profile.h"
 #include "kent_pump.h"
 #include "kent_valve.h"

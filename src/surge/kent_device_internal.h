@@ -64,10 +64,12 @@ extern const kent_device_ops KENT_AT_SURGE_TANK, KENT_AT_ONE_WAY_TANK,
     KENT_AT_AIR_VESSEL, KENT_AT_RELIEF_VALVE, KENT_AT_AIR_VALVE, KENT_AT_CONTROL_VALVE,
     KENT_AT_BURST, KENT_AT_PUMP, KENT_AT_CHECK_VALVE;
 
-/* By kind; NULL: not in this version. */
+/* By kind. */
 extern const kent_device_ops *const KENT_DEVICE_OPS[KENT_DEVICE_KINDS];
 
-/* KENT_E_INPUT where some device of m is of a kind without a row. */
-kent_status kent_device_check(const kent_model *m, kent_error *err);
+/* For start: KENT_E_INPUT at a place, "ST: what is wrong". */
+__attribute__((format(printf, 5, 6))) kent_status
+kent_device_refuse(kent_error *err, const kent_model *m, kent_place place,
+                   const char *id, const char *fmt, ...);
 
 #endif

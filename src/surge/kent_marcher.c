@@ -122,10 +122,7 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
     }
     k->model = m;
     k->step = grid->step;
-    status = kent_device_check(m, err);
-    if (status == KENT_OK) {
-        status = kent_kernel_pick(getenv("KENTLEDGE_SIMD"), &k->kernel, err);
-    }
+    status = kent_kernel_pick(getenv("KENTLEDGE_SIMD"), &k->kernel, err);
     if (status == KENT_OK) status = kent_drag_new(m, s, grid, &k->drag, err);
     if (status == KENT_OK) {
         status = kent_waves_new(m, grid, k->drag->implicit, &k->waves, err);

@@ -17,7 +17,7 @@ import sys
 
 TELLS = re.compile(
     r"^\s+(?:return\s+|\(void\)\s*)?"
-    r"(kent_complain|kent_place_complain|kent_record_complain|kent_error_set|complain\w*)\(")
+    r"(kent_complain|kent_place_complain|kent_record_complain|kent_error_set|kent_device_refuse|complain\w*)\(")
 
 
 def counts(build, source):

@@ -483,28 +483,6 @@ static march rough_main(kent_build *b, double loss, double opening)
     return march_new(b, 60.0, 0, &at, 1, 100);
 }
 
-/* Devices of a kind that the march does not know yet. */
-static void what_cannot_be_marched_is_refused(void **state)
-{
-    (void)state;
-    kent_build b = town(0.0, KENT_SURGE_CONSTANT);
-    march m = march_new(&b, 60.0, -1, WATCHES, 1, 1);
-    kent_marcher *k = NULL;
-    kent_error err = {0};
-    kent_device burst = {KENT_DEVICE_BURST, 0, 3, {0, -1}, "C"};
-    b.model->devices = &burst;
-    b.model->device_count = 1;
-    assert_int_equal(
-        kent_marcher_new(b.model, m.steady, m.grid, -1, WATCHES, 1, 1, &k, &err),
-        KENT_E_INPUT);
-    assert_non_null(strstr(err.what, "point C"));
-    assert_non_null(strstr(err.what, "not in this version"));
-    b.model->devices = NULL;
-    b.model->device_count = 0;
-    march_clear(&m);
-    kent_build_clear(&b);
-}
-
 static void beyond_the_stability_limit_the_march_stops_and_says_where(void **state)
 {
     (void)state;
@@ -695,7 +673,6 @@ int main(void)
         cmocka_unit_test(a_short_span_keeps_its_inertia),
         cmocka_unit_test(a_stub_leaves_the_surge_what_it_was),
         cmocka_unit_test(a_valve_follows_its_opening_law),
-        cmocka_unit_test(what_cannot_be_marched_is_refused),
         cmocka_unit_test(beyond_the_stability_limit_the_march_stops_and_says_where),
         cmocka_unit_test(a_head_that_is_no_number_stops_the_march),
         cmocka_unit_test(a_stiff_span_is_swept_implicitly_and_keeps_its_steady_state),
