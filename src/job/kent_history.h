@@ -8,13 +8,16 @@
  * row of its highest and of its lowest head so far. */
 typedef struct kent_history_keeper kent_history_keeper;
 
-/* steps: instants that will come; rows: most rows of the even part; places: columns. */
+/* steps: instants that will come; rows: most rows of the even part; places, devices:
+ * columns. */
 kent_status kent_history_keeper_new(size_t steps, size_t rows, size_t places,
-                                    kent_history_keeper **out, kent_error *err);
+                                    size_t devices, kent_history_keeper **out,
+                                    kent_error *err);
 
-/* head, flow: [places] m, m3/s of one instant; instants come in order of time (s). */
+/* head, flow: [places] m, m3/s, devices: [devices], of one instant; instants come in
+ * order of time (s). */
 void kent_history_keep(kent_history_keeper *k, double time, const double *head,
-                       const double *flow);
+                       const double *flow, const kent_device_row *devices);
 
 /* Rows by time, each instant once. *out is the caller's: kent_history_clear. */
 kent_status kent_history_finish(const kent_history_keeper *k, kent_history *out,

@@ -10,10 +10,22 @@ typedef struct kent_peak {           /* of one point in one march */
     double lowest_head, lowest_at;
 } kent_peak;
 
+typedef struct kent_swing {     /* of one quantity of a device; NAN: never told */
+    double highest, highest_at; /* SI, s */
+    double lowest, lowest_at;
+} kent_swing;
+
+typedef struct kent_device_extreme { /* of one device in one march */
+    kent_swing flow;                 /* m3/s, as kent_device says */
+    kent_swing told[KENT_TOLD];      /* as kent_device_quantities names them */
+    const char *caution; /* of kent_marcher_caution, and as long-lived as the program */
+} kent_device_extreme;
+
 typedef struct kent_history { /* every watched place of a march, thinned */
-    size_t rows, watch_count;
-    double *time;        /* [rows] s */
-    double *head, *flow; /* [rows][watch_count] m, m3/s */
+    size_t rows, watch_count, device_count;
+    double *time;             /* [rows] s */
+    double *head, *flow;      /* [rows][watch_count] m, m3/s */
+    kent_device_row *devices; /* [rows][device_count] */
 } kent_history;
 
 typedef struct kent_scenario_result { /* of one march */
@@ -23,10 +35,11 @@ typedef struct kent_scenario_result { /* of one march */
     double uncertainty; /* m: whole difference between the two grids; NAN: one grid */
     kent_grid *grid;    /* as marched */
     kent_peak *points;  /* [point_count]; NAN for a point on no span */
-    double **highest, **lowest; /* [span_count][reaches + 1] m */
-    kent_history history;       /* columns: kent_results.history_points */
-    size_t below_vapour;        /* grid points whose head fell below the vapour limit */
-    bool *touched;              /* [point_count] points at or next to one */
+    kent_device_extreme *devices; /* [device_count] */
+    double **highest, **lowest;   /* [span_count][reaches + 1] m */
+    kent_history history;         /* columns: kent_results.history_points */
+    size_t below_vapour; /* grid points whose head fell below the vapour limit */
+    bool *touched;       /* [point_count] points at or next to one */
 } kent_scenario_result;
 
 typedef struct kent_results {

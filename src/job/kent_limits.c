@@ -80,6 +80,17 @@ static void judge_lateness(kent_results *r, const kent_scenario_result *run)
 }
 
 /* One sentence for all: a street main has many short spans. */
+static void judge_devices(kent_results *r, const kent_scenario_result *run)
+{
+    const kent_model *m = r->model;
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_device *d = &m->devices[i];
+        if (!run->devices[i].caution) continue;
+        kent_notes_add(&r->cautions, "%s: %s \"%s\" %s", name_of(m, run).s,
+                       kent_device_word(d->kind), d->id, run->devices[i].caution);
+    }
+}
+
 static void judge_grid(kent_results *r, const kent_scenario_result *run)
 {
     const kent_model *m = r->model;
@@ -120,6 +131,7 @@ void kent_limits_judge(kent_results *r)
     if (r->loads) kent_site_test_caution(r->model, &r->loads->test, &r->cautions);
     for (size_t i = 0; i < r->scenario_count; i++) {
         judge_vapour(r, &r->scenarios[i]);
+        judge_devices(r, &r->scenarios[i]);
         judge_lateness(r, &r->scenarios[i]);
         if (i == 0) judge_grid(r, &r->scenarios[i]);
     }

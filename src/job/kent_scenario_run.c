@@ -18,6 +18,32 @@ static void peak_take(kent_peak *peak, double time, double head)
     }
 }
 
+static kent_swing nothing_told(void) { return (kent_swing){NAN, NAN, NAN, NAN}; }
+
+static void swing_take(kent_swing *e, double time, double value)
+{
+    if (isnan(value)) return;
+    if (!(value <= e->highest)) { /* NaN: the first */
+        e->highest = value;
+        e->highest_at = time;
+    }
+    if (!(value >= e->lowest)) {
+        e->lowest = value;
+        e->lowest_at = time;
+    }
+}
+
+static void take_devices(double time, const kent_device_row *rows, size_t count,
+                         kent_device_extreme *devices)
+{
+    for (size_t i = 0; i < count; i++) {
+        swing_take(&devices[i].flow, time, rows[i].flow);
+        for (int j = 0; j < KENT_TOLD; j++) {
+            swing_take(&devices[i].told[j], time, rows[i].told[j]);
+        }
+    }
+}
+
 /* heads and flows of one instant: the part of its rows that the views own. */
 static void take_peaks(const kent_viewpoints *v, double time, const double *head,
                        kent_peak *points)
@@ -29,15 +55,17 @@ static void take_peaks(const kent_viewpoints *v, double time, const double *head
 
 static void take_history(const kent_viewpoints *v, kent_history_keeper *keeper,
                          double time, const double *head, const double *flow,
-                         double *room)
+                         const kent_device_row *devices, double *room)
 {
     double *heads = room, *flows = room + v->history_count;
     for (size_t i = 0; i < v->history_count; i++) {
-        const int view = v->history[i];
-        heads[i] = head[view];
-        flows[i] = v->views[view].flow_sign * flow[view];
+        const int at = v->history[i];
+        const kent_viewpoint *view = &v->views[at];
+        heads[i] = head[at];
+        flows[i] =
+            view->device < 0 ? view->flow_sign * flow[at] : devices[view->device].flow;
     }
-    kent_history_keep(keeper, time, heads, flows);
+    kent_history_keep(keeper, time, heads, flows, devices);
 }
 
 static void take_trace(const kent_scenario_run *run, const kent_trace *trace,
@@ -48,8 +76,10 @@ static void take_trace(const kent_scenario_run *run, const kent_trace *trace,
     for (size_t n = 0; n < trace->count; n++) {
         const size_t at = n * trace->watch_count + v->recorder_count;
         const double *head = trace->head + at, *flow = trace->flow + at;
+        const kent_device_row *devices = trace->devices + n * trace->device_count;
         take_peaks(v, trace->time[n], head, out->points);
-        if (keeper) take_history(v, keeper, trace->time[n], head, flow, room);
+        take_devices(trace->time[n], devices, trace->device_count, out->devices);
+        if (keeper) take_history(v, keeper, trace->time[n], head, flow, devices, room);
     }
     if (run->recorder) kent_recorder_take(run->recorder, run->march, trace);
 }
@@ -69,6 +99,9 @@ static kent_status take_envelopes(const kent_scenario_run *run,
         out->lowest[i] = kent_alloc(nodes, sizeof *out->lowest[i]);
         if (!out->highest[i] || !out->lowest[i]) return kent_error_nomem(err);
         kent_marcher_envelope(march, (int)i, out->highest[i], out->lowest[i]);
+    }
+    for (size_t i = 0; i < m->device_count; i++) {
+        out->devices[i].caution = kent_marcher_caution(march, i);
     }
     out->below_vapour = kent_marcher_below_vapour(march, out->touched);
     return KENT_OK;
@@ -93,9 +126,17 @@ kent_status kent_scenario_run_march(const kent_scenario_run *run,
     out->step = step;
     out->steps = instants - 1;
     out->points = kent_alloc(m->point_count, sizeof *out->points);
-    if (!room || !out->points) {
+    out->devices = kent_alloc(m->device_count, sizeof *out->devices);
+    if (!room || !out->points || !out->devices) {
         status = kent_error_nomem(err);
         goto done;
+    }
+    for (size_t i = 0; i < m->device_count; i++) {
+        kent_device_extreme *d = &out->devices[i];
+        d->flow = nothing_told();
+        for (int j = 0; j < KENT_TOLD; j++) {
+            d->told[j] = nothing_told();
+        }
     }
     for (size_t i = 0; i < m->point_count; i++) {
         out->points[i] = nothing_seen();
@@ -105,8 +146,9 @@ kent_status kent_scenario_run_march(const kent_scenario_run *run,
     if (status) goto done;
     if (run->recorder) {
         kent_recorder_start(run->recorder, run->march, step);
-        status = kent_history_keeper_new(instants, (size_t)m->solver.history_rows,
-                                         v->history_count, &keeper, err);
+        status =
+            kent_history_keeper_new(instants, (size_t)m->solver.history_rows,
+                                    v->history_count, m->device_count, &keeper, err);
         if (status) goto done;
     }
     for (size_t left = instants; left > 0 && !status;) {
@@ -135,6 +177,7 @@ void kent_scenario_result_clear(kent_scenario_result *r, size_t span_count)
     free(r->highest);
     free(r->lowest);
     free(r->points);
+    free(r->devices);
     free(r->touched);
     kent_history_clear(&r->history);
     kent_grid_free(r->grid);

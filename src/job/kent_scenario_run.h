@@ -15,8 +15,8 @@ typedef struct kent_scenario_run {
 } kent_scenario_run;
 
 /* Marches to the end of the scenario. With a recorder, fills out->step, steps, points,
- * highest, lowest, history, below_vapour and touched, and the recorder's slot; without
- * one only out->points. out->grid is left alone. */
+ * devices, highest, lowest, history, below_vapour and touched, and the recorder's slot;
+ * without one only out->points and devices. out->grid is left alone. */
 kent_status kent_scenario_run_march(const kent_scenario_run *run,
                                     kent_scenario_result *out, kent_error *err);
 void kent_scenario_result_clear(kent_scenario_result *r, size_t span_count);

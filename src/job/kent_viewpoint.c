@@ -8,13 +8,14 @@ typedef struct looks {
     kent_watch *place; /* [point_count] the first, in order of spans and then along the
                           route, where the point is met; span -1: on no pipe */
     int *valve;        /* [point_count] that stands there; -1: none */
+    int *device;       /* [point_count] the first that stands there; -1: none */
     bool *wanted;      /* [point_count] its history is kept */
 } looks;
 
 static void find_places(const kent_model *m, const looks *l)
 {
     for (size_t p = 0; p < m->point_count; p++) {
-        l->place[p].span = l->valve[p] = -1;
+        l->place[p].span = l->valve[p] = l->device[p] = -1;
     }
     for (size_t i = 0; i < m->span_count; i++) {
         const size_t first = m->spans[i].route_first;
@@ -26,6 +27,9 @@ static void find_places(const kent_model *m, const looks *l)
     }
     for (size_t i = m->valve_count; i > 0; i--) {
         l->valve[m->valves[i - 1].point] = (int)i - 1; /* the first stays */
+    }
+    for (size_t i = m->device_count; i > 0; i--) {
+        l->device[m->devices[i - 1].point] = (int)i - 1;
     }
 }
 
@@ -55,6 +59,9 @@ static void mark_histories(const kent_model *m, bool *wanted)
     for (size_t i = 0; i < m->valve_count; i++) {
         wanted[m->valves[i].point] = true;
     }
+    for (size_t i = 0; i < m->device_count; i++) {
+        wanted[m->devices[i].point] = true;
+    }
 }
 
 /* A valve's own flow is positive from its first node: into the valve at a span's end.
@@ -77,21 +84,36 @@ static void add_view(kent_viewpoints *v, kent_viewpoint view, kent_watch watch,
     v->count++;
 }
 
+/* The nodes of what stands in line at a point, or of a valve that discharges there. */
+static const int *nodes_in_line(const kent_model *m, const looks *l, int point)
+{
+    if (l->valve[point] >= 0) return m->valves[l->valve[point]].node;
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_device *d = &m->devices[i];
+        if (d->point == point && d->node[0] >= 0 && d->node[1] >= 0) return d->node;
+    }
+    return NULL;
+}
+
+/* Flow through a device, where one stands there: a valve's before all others'. */
 static void add_point(kent_viewpoints *v, const kent_model *m, const looks *l,
                       int point)
 {
-    const int valve = l->valve[point];
+    const int valve = l->valve[point], device = valve < 0 ? l->device[point] : -1;
     const bool history = l->wanted[point];
-    if (valve < 0) {
+    const int *node = nodes_in_line(m, l, point);
+    if (!node) {
         if (l->place[point].span < 0) return; /* on no pipe */
-        add_view(v, (kent_viewpoint){point, 1.0, false}, l->place[point], history);
+        add_view(v, (kent_viewpoint){point, 1.0, false, device}, l->place[point],
+                 history);
         return;
     }
-    const int *node = m->valves[valve].node;
-    add_view(v, (kent_viewpoint){point, sign_at_valve(m, valve), false},
-             place_of_node(m, node[0]), history);
+    const double sign = valve < 0 ? 1.0 : sign_at_valve(m, valve);
+    add_view(v, (kent_viewpoint){point, sign, false, device}, place_of_node(m, node[0]),
+             history);
     if (node[1] < 0) return;
-    add_view(v, (kent_viewpoint){point, 1.0, true}, place_of_node(m, node[1]), false);
+    add_view(v, (kent_viewpoint){point, 1.0, true, -1}, place_of_node(m, node[1]),
+             false);
 }
 
 kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *recorder,
@@ -100,14 +122,15 @@ kent_status kent_viewpoints_new(const kent_model *m, const kent_recorder *record
     kent_status status = KENT_E_NOMEM;
     size_t recorder_count = 0;
     const kent_watch *own = kent_recorder_watches(recorder, &recorder_count);
-    const size_t most = m->point_count + m->valve_count;
+    const size_t most = 2 * m->point_count;
     const looks l = {
         .place = kent_alloc(m->point_count, sizeof *l.place),
         .valve = kent_alloc(m->point_count, sizeof *l.valve),
+        .device = kent_alloc(m->point_count, sizeof *l.device),
         .wanted = kent_alloc(m->point_count, sizeof *l.wanted),
     };
     kent_viewpoints *v = kent_alloc(1, sizeof *v);
-    if (!l.place || !l.valve || !l.wanted || !v) goto done;
+    if (!l.place || !l.valve || !l.device || !l.wanted || !v) goto done;
 
     v->watches = kent_alloc(recorder_count + most, sizeof *v->watches);
     v->views = kent_alloc(most, sizeof *v->views);
@@ -129,6 +152,7 @@ done:
     kent_viewpoints_free(v);
     free(l.place);
     free(l.valve);
+    free(l.device);
     free(l.wanted);
     return status;
 }

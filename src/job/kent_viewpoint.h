@@ -4,12 +4,13 @@
 
 #include "kent_loads.h"
 
-/* One watched place and the point it shows. A point with an in-line valve has two. */
+/* One watched place and the point it shows. A point with something in line has two. */
 typedef struct kent_viewpoint {
     int point;
     double
         flow_sign; /* +1, or -1 where the flow through a device runs against the span */
-    bool second;   /* the far side of an in-line valve: for peaks, not for histories */
+    bool second;   /* the far side of what is in line: for peaks, not for histories */
+    int device;    /* whose flow is shown; -1: the span's */
 } kent_viewpoint;
 
 /* Every place a march must show, in order: first the recorder's own, then the points'.

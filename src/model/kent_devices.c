@@ -383,3 +383,24 @@ int kent_model_device_index(const kent_model *m, const char *id)
     }
     return -1;
 }
+
+kent_name kent_device_name(const kent_model *m, size_t device)
+{
+    const kent_device *d = &m->devices[device];
+    kent_name out;
+    (void)snprintf(out.s, sizeof out.s, "%s%s", d->id,
+                   d->kind == KENT_DEVICE_BURST ? ".burst" : "");
+    return out;
+}
+
+bool kent_device_is_left_out(const kent_model *m, size_t device, int scenario)
+{
+    if (scenario < 0) return false;
+    const kent_scenario *of = &m->scenarios[scenario];
+    for (size_t i = 0; i < of->without_count; i++) {
+        const kent_left_out *out = &m->without[of->without_first + i];
+        if (out->kind != m->devices[device].kind) continue;
+        if (out->index == m->devices[device].index) return true;
+    }
+    return false;
+}

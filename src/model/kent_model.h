@@ -828,12 +828,19 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints);
 kent_model *kent_model_in_state(const kent_model *m, int state, const double *capacity);
 void kent_model_view_free(kent_model *view);
 
+/* Whether a scenario (-1: none) leaves a device out. */
+bool kent_device_is_left_out(const kent_model *m, size_t device, int scenario);
+
 /* What something is called in a state: "shut-16s (low)"; in a case of one state, or of
  * none in particular (-1), its name alone. */
 typedef struct kent_name {
     char s[2 * KENT_ID + 20];
 } kent_name;
 kent_name kent_name_in_state(const kent_model *m, const char *name, int state);
+
+/* What a device is called in results: its id, or "K2.burst", since a burst has only its
+ * point's. */
+kent_name kent_device_name(const kent_model *m, size_t device);
 
 /* What files of a march are called after: "shut-16s", and "shut-16s-low" where that
  * scenario starts from several states. No two marches share one. */

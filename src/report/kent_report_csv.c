@@ -10,23 +10,47 @@ static void add_field(kent_text *out, double value)
     kent_text_add(out, isfinite(value) ? ",%.10g" : ",", value);
 }
 
+static void add_column(kent_text *out, const char *of, const char *quantity)
+{
+    kent_text head = {0};
+    kent_text_add(&head, "%s.%s", of, quantity);
+    kent_text_add(out, ",");
+    kent_summary_field(out, kent_text_of(&head));
+    out->failed = out->failed || head.failed;
+    kent_text_clear(&head);
+}
+
 static void add_history_heading(const kent_results *r, kent_text *out)
 {
     static const char *const COLUMNS[] = {"head_m", "pressure_Pa", "flow_m3s"};
-    kent_text head = {0};
+    const kent_model *m = r->model;
     kent_text_add(out, "time_s");
     for (size_t w = 0; w < r->history_count; w++) {
-        const kent_point *p = &r->model->points[r->history_points[w]];
         for (size_t c = 0; c < 3; c++) {
-            kent_text_reset(&head);
-            kent_text_add(&head, "%s.%s", p->id, COLUMNS[c]);
-            kent_text_add(out, ",");
-            kent_summary_field(out, kent_text_of(&head));
+            add_column(out, m->points[r->history_points[w]].id, COLUMNS[c]);
+        }
+    }
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_name name = kent_device_name(m, i);
+        const kent_device_quantity *q = kent_device_quantities(m->devices[i].kind);
+        add_column(out, name.s, COLUMNS[2]);
+        for (int j = 0; j < KENT_TOLD && q[j].name; j++) {
+            add_column(out, name.s, q[j].name);
         }
     }
     kent_text_add(out, "\n");
-    out->failed = out->failed || head.failed;
-    kent_text_clear(&head);
+}
+
+static void add_device_fields(const kent_model *m, const kent_device_row *rows,
+                              kent_text *out)
+{
+    for (size_t i = 0; i < m->device_count; i++) {
+        const kent_device_quantity *q = kent_device_quantities(m->devices[i].kind);
+        add_field(out, rows[i].flow);
+        for (int j = 0; j < KENT_TOLD && q[j].name; j++) {
+            add_field(out, rows[i].told[j]);
+        }
+    }
 }
 
 kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
@@ -46,6 +70,7 @@ kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
             add_field(&out, kent_model_pressure(m, head, z));
             add_field(&out, h->flow[row * h->watch_count + w]);
         }
+        add_device_fields(m, h->devices + row * h->device_count, &out);
         kent_text_add(&out, "\n");
         status = kent_sink_flush(sink, &out);
     }

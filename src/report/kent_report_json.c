@@ -268,6 +268,36 @@ static json_t *scenario_point(const kent_model *m, size_t point,
     return object_done(o);
 }
 
+static void set_swing(kent_object *o, const char *name, const kent_swing *e)
+{
+    kent_object of = object_new();
+    set(&of, "highest", real(e->highest));
+    set(&of, "highest_at_s", real(e->highest_at));
+    set(&of, "lowest", real(e->lowest));
+    set(&of, "lowest_at_s", real(e->lowest_at));
+    set(o, name, object_done(of));
+}
+
+/* SI, the unit in each quantity's name. */
+static json_t *scenario_device(const kent_model *m, size_t device,
+                               const kent_scenario_result *s)
+{
+    const kent_device *d = &m->devices[device];
+    const kent_device_extreme *of = &s->devices[device];
+    const kent_device_quantity *q = kent_device_quantities(d->kind);
+    kent_object o = object_new();
+    set(&o, "id", words(kent_device_name(m, device).s));
+    set(&o, "at", words(m->points[d->point].id));
+    set(&o, "kind", words(kent_device_word(d->kind)));
+    set(&o, "left_out", json_boolean(kent_device_is_left_out(m, device, s->scenario)));
+    set_swing(&o, "flow_m3s", &of->flow);
+    for (int j = 0; j < KENT_TOLD && q[j].name; j++) {
+        set_swing(&o, q[j].name, &of->told[j]);
+    }
+    set(&o, "caution", of->caution ? words(of->caution) : json_null());
+    return object_done(o);
+}
+
 /* How the pressure of the site test was found, and where it is read. */
 static json_t *test_of(const kent_results *r)
 {
@@ -300,6 +330,11 @@ static void put_scenario(kent_writer *w, const kent_scenario_result *s)
     open_list(w, ",\n\"points\": [");
     for (size_t i = 0; i < m->point_count; i++) {
         put_element(w, scenario_point(m, i, s));
+    }
+    put_text(w, "]");
+    open_list(w, ",\n\"devices\": [");
+    for (size_t i = 0; i < m->device_count; i++) {
+        put_element(w, scenario_device(m, i, s));
     }
     put_text(w, "]}");
 }

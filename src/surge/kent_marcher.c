@@ -289,6 +289,11 @@ void kent_marcher_profile(const kent_marcher *k, int span, double *head, double 
     }
 }
 
+const char *kent_marcher_caution(const kent_marcher *k, size_t device)
+{
+    return kent_stands_caution(k->ends->stands, device);
+}
+
 /* The points of a span's route on either side of a chainage (m), or the one at it. */
 static void touch(const kent_model *m, const kent_span *span, double chainage,
                   bool *touched)

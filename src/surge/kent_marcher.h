@@ -63,6 +63,10 @@ void kent_marcher_free(kent_marcher *k);
 size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
                             kent_error *err);
 
+/* NULL, or what must be told of a device with the results, as a sentence goes on after
+ * what it is and its id: "overflows; ..."; of all that happened so far. */
+const char *kent_marcher_caution(const kent_marcher *k, size_t device);
+
 /* Highest and lowest head so far at every grid point of a span, [reaches + 1] each, m.
  * Written to arrays of the caller's. */
 void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,

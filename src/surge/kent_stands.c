@@ -54,20 +54,6 @@ static void find_clusters(kent_stands *s, int *part, bool *taken)
     }
 }
 
-static void mark_absent(kent_stands *s, int scenario)
-{
-    const kent_model *m = s->model;
-    if (scenario < 0) return;
-    const kent_scenario *of = &m->scenarios[scenario];
-    for (size_t i = 0; i < m->device_count; i++) {
-        const kent_device *d = &m->devices[i];
-        for (size_t j = 0; j < of->without_count; j++) {
-            const kent_left_out *out = &m->without[of->without_first + j];
-            if (out->kind == d->kind && out->index == d->index) s->absent[i] = true;
-        }
-    }
-}
-
 /* ---- members ----------------------------------------------------------------------
  */
 
@@ -230,7 +216,9 @@ kent_status kent_stands_new(const kent_model *m, const kent_steady *s, int scena
         !k->node_store || !k->clusters || !k->member_store) {
         goto done;
     }
-    mark_absent(k, scenario);
+    for (size_t i = 0; i < devices; i++) {
+        k->absent[i] = kent_device_is_left_out(m, i, scenario);
+    }
     find_clusters(k, part, taken);
     fill_clusters(k, s, e, part);
     if (!make_room(k)) goto done;
@@ -294,8 +282,8 @@ static void settle(kent_stands *s, const kent_member *member)
         member->ops->beyond ? member->ops->beyond(member->state) : NULL;
     if (!beyond) return;
     const kent_device *d = &s->model->devices[member->device];
-    (void)kent_error_set(&s->stopped, KENT_E_SOLVE, "", "\"%s\" %s (after %.4g s)",
-                         d->id, beyond, s->time);
+    (void)kent_error_set(&s->stopped, KENT_E_SOLVE, "", "%s \"%s\" %s (after %.4g s)",
+                         kent_device_word(d->kind), d->id, beyond, s->time);
 }
 
 void kent_stands_solve(kent_stands *s, size_t cluster)
@@ -314,6 +302,12 @@ void kent_stands_solve(kent_stands *s, size_t cluster)
     for (size_t i = 0; i < c->member_count; i++) {
         settle(s, &c->members[i]);
     }
+}
+
+const char *kent_stands_caution(const kent_stands *s, size_t device)
+{
+    const kent_member *member = s->members[device];
+    return member && member->ops->caution ? member->ops->caution(member->state) : NULL;
 }
 
 void kent_stands_tell(const kent_stands *s, kent_device_row *rows)

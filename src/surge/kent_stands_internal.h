@@ -35,6 +35,9 @@ void kent_stands_move(kent_stands *s, const kent_schedule *schedule, double time
  * What stops the march is left in s->stopped. */
 void kent_stands_solve(kent_stands *s, size_t cluster);
 
+/* NULL, or what must be told of a device: kent_device_ops.caution. */
+const char *kent_stands_caution(const kent_stands *s, size_t device);
+
 /* [device_count] what devices show now. */
 void kent_stands_tell(const kent_stands *s, kent_device_row *rows);
 

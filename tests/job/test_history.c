@@ -9,10 +9,10 @@ static kent_history kept_with_a_spike(size_t spike, size_t rows)
     kent_error err = {0};
     kent_history h = {0};
     kent_history_keeper *k = NULL;
-    assert_int_equal(kent_history_keeper_new(STEPS, rows, 1, &k, &err), KENT_OK);
+    assert_int_equal(kent_history_keeper_new(STEPS, rows, 1, 0, &k, &err), KENT_OK);
     for (size_t i = 0; i < STEPS; i++) {
         const double head = i == spike ? 7.0 : 0.0, flow = (double)i;
-        kent_history_keep(k, 0.1 * (double)i, &head, &flow);
+        kent_history_keep(k, 0.1 * (double)i, &head, &flow, NULL);
     }
     assert_int_equal(kent_history_finish(k, &h, &err), KENT_OK);
     kent_history_keeper_free(k);
