@@ -372,6 +372,44 @@ done:
     return code;
 }
 
+/* The job, and then the same marches by the second method. */
+static kent_exit command_cross_check(session *s)
+{
+    kent_opinion *opinions = NULL;
+    kent_march *marches = NULL;
+    kent_text text = {0};
+    size_t count = 0;
+    kent_exit code = read_case(s);
+    if (!code) code = choose_scenarios(s);
+    if (!code) code = do_job(s);
+    if (code) return code;
+    const kent_results *r = s->results;
+    const kent_report_options o = report_options(s);
+    opinions = kent_alloc(r->scenario_count, sizeof *opinions);
+    marches = kent_alloc(r->scenario_count, sizeof *marches);
+    if (!opinions || !marches) {
+        code = fail(s, kent_error_nomem(&s->error));
+        goto done;
+    }
+    for (; count < r->scenario_count; count++) {
+        marches[count] =
+            (kent_march){r->scenarios[count].scenario, r->scenarios[count].state};
+    }
+    kent_status status =
+        kent_crosscheck_run(s->model, r->steadies, marches, count,
+                            kent_job_threads(s->options->threads), opinions, &s->error);
+    if (!status) status = kent_report_cross(r, opinions, &o, kent_output_gather(&text));
+    code = print_report(s, status, &text);
+done:
+    for (size_t i = 0; i < count; i++) {
+        kent_opinion_clear(&opinions[i]);
+    }
+    kent_text_clear(&text);
+    free(opinions);
+    free(marches);
+    return code;
+}
+
 static kent_exit command_catalogue(session *s)
 {
     kent_text text = {0};
@@ -406,6 +444,9 @@ kent_exit kent_commands_do(const kent_options *o)
         break;
     case KENT_EXPLAIN:
         code = command_explain(&s);
+        break;
+    case KENT_CROSS_CHECK:
+        code = command_cross_check(&s);
         break;
     case KENT_CATALOGUE_LIST:
         code = command_catalogue(&s);

@@ -40,14 +40,16 @@ static const command_row COMMANDS[] = {
      GAVE_UNITS | GAVE_WIDE | GAVE_QUIET | GAVE_KEYS},
     {"explain", "a CASE and at most 8 FITTINGs", 1, 1 + KENT_OPTIONS_WORDS,
      KENT_EXPLAIN, GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
+    {"cross-check", "one CASE", 1, 1, KENT_CROSS_CHECK,
+     GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
     {"catalogue", "a part and at most 8 words", 0, 1 + KENT_OPTIONS_WORDS,
      KENT_CATALOGUE_LIST, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
 };
 enum { COMMAND_COUNT = sizeof COMMANDS / sizeof COMMANDS[0] };
 
-static const char *const LATER[] = {"cross-check", "as-built",    "standard-table",
-                                    "draw",        "vary",        "find-limit",
-                                    "probability", "from-survey", "serve"};
+static const char *const LATER[] = {"as-built",    "standard-table", "draw",
+                                    "vary",        "find-limit",     "probability",
+                                    "from-survey", "serve"};
 enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 
 static const char *const PARTS[] = {"pipes", "soils", "valves", "rules", "materials"};
@@ -58,6 +60,7 @@ static const char ARGUMENTS[] =
     "check CASE\n"
     "check --keys\n"
     "explain CASE [FITTING...]\n"
+    "cross-check CASE\n"
     "catalogue [pipes|materials|valves|soils|rules [WORD...]]";
 
 static const char DOCUMENT[] =
@@ -71,6 +74,7 @@ static const char DOCUMENT[] =
     "assumed\n"
     "explain    the numbers of every FITTING named, else of all, as a hand "
     "calculation\n"
+    "cross-check  peaks by a second, independent method beside those of the run\n"
     "catalogue  what config/ offers, each row with its source; of one part the rows "
     "that "
     "have every WORD\n"
@@ -195,7 +199,8 @@ static const command_row *find_command(struct argp_state *state, const reading *
                    word);
     } else {
         argp_error(state,
-                   "'%s' is not a command; one of run, check, explain, catalogue",
+                   "'%s' is not a command; one of run, check, explain, "
+                   "cross-check, catalogue",
                    word);
     }
     return NULL; /* not reached: argp_error ends the program */
@@ -223,7 +228,8 @@ static void check_options(struct argp_state *state, const command_row *c, unsign
 static void finish(struct argp_state *state, reading *r)
 {
     if (r->word_count == 0) {
-        argp_error(state, "no command; one of run, check, explain, catalogue");
+        argp_error(state, "no command; one of run, check, explain, cross-check, "
+                          "catalogue");
     }
     const command_row *c = find_command(state, r);
     if (!c) return;

@@ -19,6 +19,7 @@ typedef enum kent_command {
     KENT_RUN,
     KENT_CHECK,
     KENT_EXPLAIN,
+    KENT_CROSS_CHECK,
     KENT_CATALOGUE_LIST
 } kent_command;
 

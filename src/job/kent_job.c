@@ -179,9 +179,9 @@ static kent_status name_histories(const kent_viewpoints *v, kent_results *r,
     return KENT_OK;
 }
 
-static unsigned threads_of(const kent_job_options *options)
+unsigned kent_job_threads(unsigned asked)
 {
-    if (options->threads > 0) return options->threads;
+    if (asked > 0) return asked;
     const long processors = sysconf(_SC_NPROCESSORS_ONLN);
     return processors > 0 ? (unsigned)processors : 1;
 }
@@ -234,7 +234,7 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     if (!status) status = kent_viewpoints_new(m, plan.recorder, &plan.views, err);
     if (!status) status = name_histories(plan.views, r, err);
     if (!status && r->scenario_count > 0) {
-        status = march_all(&plan, threads_of(options), err);
+        status = march_all(&plan, kent_job_threads(options->threads), err);
     }
     if (!status) {
         const kent_worst surge = kent_overload_of_marches(r);

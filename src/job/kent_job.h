@@ -65,6 +65,10 @@ typedef struct kent_job_options {
     unsigned threads; /* 0: as many as there are processors */
 } kent_job_options;
 
+/* What to start where so many were asked for: that many, or, of 0, one for each
+ * processor. */
+unsigned kent_job_threads(unsigned asked);
+
 kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
                          kent_results **out, kent_error *err);
 void kent_results_free(kent_results *r);

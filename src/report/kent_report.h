@@ -4,6 +4,7 @@
 #define KENT_REPORT_H
 
 #include "kent_catalogue.h"
+#include "kent_crosscheck.h"
 #include "kent_job.h"
 #include <stdio.h>
 
@@ -43,6 +44,11 @@ kent_status kent_report_keys(kent_sink sink);
 /* `explain`: one fitting's numbers as a hand calculation. */
 kent_status kent_report_explain(const kent_results *r, int fitting,
                                 const kent_report_options *o, kent_sink sink);
+
+/* `cross-check`: the peaks of r and of a second opinion on each of its scenarios
+ * ([scenario_count]) side by side. */
+kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinions,
+                              const kent_report_options *o, kent_sink sink);
 
 /* Which rows of the catalogue: part is NULL for all or "pipes", "soils", "valves",
  * "rules", "materials"; every word must occur, in any case of letters, in a row's id,

@@ -65,6 +65,7 @@ class App(unittest.TestCase):
                 ([], "no command"), (["rnu", "main.cfg"], "did you mean 'run'"),
                 (["main.cfg"], "run main.cfg"), (["run"], "one CASE"),
                 (["run", "a", "b"], "one CASE"), (["explain"], "FITTING"),
+                (["cross-check", "main.cfg", "--strict"], "--strict"),
                 (["run", "main.cfg", "--units", "metric"], "SI, US"),
                 (["run", "main.cfg", "--format=xml"], "table, csv, json"),
                 (["run", "main.cfg", "--threads", "0"], "1 to 1024"),
@@ -340,6 +341,25 @@ class App(unittest.TestCase):
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 
+    def test_cross_check_sets_two_methods_side_by_side(self):
+        case = str(SOURCE / "cases" / "learn" / "7-states" / "7-states.cfg")
+        r = self.call("cross-check", case, "--scenario", "shut-8s")
+        self.assertEqual((r.returncode, r.stderr), (0, ""))
+        said = " ".join(r.stdout.split())
+        self.assertIn("shut-8s (full): Outlet valve closed in 8 s", said)
+        self.assertNotIn("shut-1s", said)
+        share = re.search(r"head at E differs by ([\d.]+) % of its swing \(asked 2 %\)", said)
+        self.assertLess(float(share[1]), 2.0)
+        self.assertIn("2L/a is 2 s", said)
+        self.assertIn("Rigid:", said)
+        self.assertIn("Column separation: pipes stay full", said)
+        self.assertEqual(self.left(), set())
+        r = self.call("cross-check", case, "--scenario", "shut-9s")
+        self.assertEqual((r.returncode, r.stdout), (2, ""))
+        still = str(SOURCE / "cases" / "learn" / "1-one-pipe" / "1-one-pipe.cfg")
+        r = self.call("cross-check", still, "--units", "US")
+        self.assertEqual(r.returncode, 0)
+
     def test_check_says_what_a_test_by_rule_comes_to(self):
         case = SOURCE / "cases" / "learn" / "9-us-units" / "9-us-units.cfg"
         said = " ".join(self.call("check", str(case)).stdout.split())
@@ -423,7 +443,7 @@ class App(unittest.TestCase):
         shown = self.call("--help").stdout
         for option in re.findall(r"--[a-z-]+", shown):
             self.assertIn(f"`{option}", manual)
-        for command in ("run", "check", "explain", "catalogue"):
+        for command in ("run", "check", "explain", "cross-check", "catalogue"):
             self.assertIn(f"`{command}", manual)
 
 

@@ -9,7 +9,7 @@ import sys
 
 # Folders in pipeline order: a folder includes only its own headers and those above it.
 ORDER = ["base", "units", "hydro", "model", "casefile", "steady", "surge", "thrust",
-         "restraint", "job", "report", "app"]
+         "restraint", "crosscheck", "job", "report", "app"]
 
 STANDARD = {"assert.h", "ctype.h", "errno.h", "float.h", "inttypes.h", "limits.h",
             "math.h", "stdarg.h", "stdbool.h", "stddef.h", "stdint.h", "stdio.h",
@@ -27,6 +27,8 @@ OUTSIDE = {
                "sundials/sundials_matrix.h", "sundials/sundials_context.h",
                "sundials/sundials_nvector.h", "sundials/sundials_math.h",
                "sunmatrix/sunmatrix_sparse.h"},
+    "crosscheck": {"ida/ida.h", "nvector/nvector_serial.h", "sunlinsol/sunlinsol_klu.h",
+                   "sunmatrix/sunmatrix_sparse.h"},
     "job": {"unistd.h"},
     "report": {"jansson.h"},
     "app": {"argp.h", "locale.h", "unistd.h", "signal.h", "fcntl.h", "stdio_ext.h"},
