@@ -154,8 +154,8 @@ static kent_status tell_unknown(const kent_equations *eq, const int *part, size_
     for (size_t i = 0; i < m->device_count; i++) {
         const kent_link *link = &eq->link[eq->first_device + i];
         const bool in_line = m->devices[i].node[1] >= 0;
-        if (!in_line || passes_on_head(link) || !leads_to(link, part, part[n]))
-            continue;
+        if (!in_line || passes_on_head(link)) continue;
+        if (!leads_to(link, part, part[n])) continue;
         return tell_device(eq, i, part, n, err);
     }
     /* unreached: a part without a fixed level is refused when the model is derived */

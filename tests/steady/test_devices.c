@@ -296,6 +296,35 @@ static void a_station_delivers_where_its_curve_meets_the_main(void **state)
     }
 }
 
+/* Munson, Young and Okiishi, Fundamentals of Fluid Mechanics, Example 12.4, from
+ * memory: 200 ft of 6 in, f = 0.02, K = 0.5 + 1.5 + 1.0, 10 ft of lift; the pump's
+ * curve is met at 1600 gal/min and 66.5 ft with an efficiency of 84 %, which takes 32.0
+ * hp. Of the curve that point alone is theirs. */
+static void pump_and_system_meet_where_munson_finds_it(void **state)
+{
+    (void)state;
+    const double foot = 0.3048, gallon = 3.785411784e-3; /* m, m3 */
+    const double q = 1600.0 * gallon / 60.0;
+    kent_build b = kent_build_new();
+    add_point(&b, "P", 0.0, 0.0);
+    add_point(&b, "R", 200.0 * foot, 0.0);
+    const int pipe = add_pipe(&b, "A", "P R", 0.5 * foot, 200.0 * foot);
+    b.model->pipes[pipe].loss = 3.0;
+    kent_build_fixed_level(&b, "R", 15.0 * foot);
+    const int p = kent_build_pump(&b, "PS", "P", NULL, 88.0 * foot, q, 66.5 * foot);
+    kent_pump *pump = &b.model->pumps[p];
+    pump->suction_level = 5.0 * foot;
+    pump->curve.rated_efficiency = 0.84;
+    assert_null(kent_pump_curve_complete(&pump->curve, 1000.0, G));
+    kent_steady *s = solve(&b);
+    const kent_pump_duty duty = kent_steady_pump(s, 0);
+    assert_close(duty.flow, q, 5e-3);
+    assert_close(duty.lift, 66.5 * foot, 5e-3);
+    assert_close(duty.power, 32.0 * 745.7, 5e-3);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
 static void a_pump_too_weak_for_the_lift_is_held_by_its_check_valve(void **state)
 {
     (void)state;
@@ -894,6 +923,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_station_delivers_where_its_curve_meets_the_main),
+        cmocka_unit_test(pump_and_system_meet_where_munson_finds_it),
         cmocka_unit_test(a_pump_too_weak_for_the_lift_is_held_by_its_check_valve),
         cmocka_unit_test(a_standing_pump_lets_water_back_only_without_a_check_valve),
         cmocka_unit_test(boosters_in_series_add_their_lifts),
