@@ -10,6 +10,9 @@ static const double PI = 3.14159265358979323846;
 /* Suter's angle over which what the own curve differs by dies away below shut-off. */
 static const double BELOW = 0.25 * 3.14159265358979323846;
 
+/* And beyond its last point: this share of the angle from there to standstill. */
+static const double BEYOND = 0.75;
+
 /* How far the rated head may lie off the own curve. */
 static const double OFF_CURVE = 0.05;
 
@@ -133,16 +136,15 @@ static void interpolate_suter(kent_pump_curve *c)
 }
 
 /* 13.7: what is added to Suter's curve at an angle. It dies away over BELOW on the side
- * of reverse flow, and before the pump would stand still on the other. */
+ * of reverse flow, and well before the pump would stand still on the other. */
 static curve_value added(const kent_pump_join join[2], double last_angle, double x)
 {
-    const double still = 1.5 * PI;
     if (x > PI - BELOW && x <= PI) {
         return cubic(BELOW, (x - (PI - BELOW)) / BELOW, (double[]){0.0, join[0].value},
                      (double[]){0.0, join[0].slope});
     }
-    if (x >= last_angle && x < still) {
-        const double width = still - last_angle;
+    const double width = BEYOND * (1.5 * PI - last_angle);
+    if (x >= last_angle && x < last_angle + width) {
         return cubic(width, (x - last_angle) / width, (double[]){join[1].value, 0.0},
                      (double[]){join[1].slope, 0.0});
     }
@@ -222,32 +224,39 @@ static void own_torque(kent_pump_curve *c, double density, double gravity)
     slopes_of(c->flow, c->torque, c->count, c->torque_slope);
 }
 
-/* Own curve less Suter's at the own one's point i, as functions of the angle whose
- * tangent is t. scale: rated value. */
-static kent_pump_join join_at(const kent_pump_curve *c, const double *y,
-                              const double *slope, size_t i, double scale,
-                              curve_value other)
+/* A quantity in the form of 13.3, and its derivative by the angle whose tangent is t:
+ * 13.8. y: m or N m at the own curve's point i; scale: its rated value. */
+static curve_value form_of(const kent_pump_curve *c, const double *y,
+                           const double *slope, size_t i, double scale)
 {
     const double t = c->flow[i] / c->rated_flow;
     const double f = y[i] / scale, df = slope[i] * c->rated_flow / scale;
-    return (kent_pump_join){f / (1.0 + t * t) - other.value,
-                            df - 2.0 * f * t / (1.0 + t * t) - other.slope};
+    return (curve_value){f / (1.0 + t * t), df - 2.0 * f * t / (1.0 + t * t)};
 }
 
+/* Own curve less Suter's where the own one ends: of the head, and of the torque that
+ * is lost in the pump. */
 static void join(kent_pump_curve *c)
 {
     const size_t last = c->count - 1;
     c->last = c->flow[last] / c->rated_flow;
     c->last_angle = PI + kent_atan2(c->last, 1.0);
-    const double at[2] = {PI, c->last_angle};
     for (size_t k = 0; k < 2; k++) {
         const size_t i = k == 0 ? 0 : last;
-        c->wh_join[k] = join_at(c, c->head, c->head_slope, i, c->rated_head,
-                                suter(c->wh, c->wh_slope, at[k]));
+        const double at = k == 0 ? PI : c->last_angle, t = k == 0 ? 0.0 : c->last;
+        const curve_value h = form_of(c, c->head, c->head_slope, i, c->rated_head);
+        const curve_value hs = suter(c->wh, c->wh_slope, at);
+        const kent_pump_join d = {h.value - hs.value, h.slope - hs.slope};
+        c->wh_join[k] = d;
         c->wb_join[k] = (kent_pump_join){0};
         if (!c->own_torque) continue;
-        c->wb_join[k] = join_at(c, c->torque, c->torque_slope, i, c->rated_torque,
-                                suter(c->wb, c->wb_slope, at[k]));
+        const curve_value b =
+            form_of(c, c->torque, c->torque_slope, i, c->rated_torque);
+        const curve_value bs = suter(c->wb, c->wb_slope, at);
+        const double e = c->rated_efficiency;
+        c->wb_join[k].value = b.value - bs.value - e * t * d.value;
+        c->wb_join[k].slope =
+            b.slope - bs.slope - e * (t * d.slope + (1.0 + t * t) * d.value);
     }
 }
 
@@ -292,12 +301,12 @@ typedef struct affine {
     double value, by_v, by_alpha;
 } affine;
 
-/* 13.3, 13.7: (alpha2 + v2) W(x) */
-static affine by_angle(double v, double alpha, curve_value w, curve_value d)
+/* 13.3: (alpha2 + v2) W(x) */
+static affine by_angle(double v, double alpha, curve_value w)
 {
-    const double value = w.value + d.value, slope = w.slope + d.slope;
-    return (affine){(alpha * alpha + v * v) * value, 2.0 * v * value + alpha * slope,
-                    2.0 * alpha * value - v * slope};
+    return (affine){(alpha * alpha + v * v) * w.value,
+                    2.0 * v * w.value + alpha * w.slope,
+                    2.0 * alpha * w.value - v * w.slope};
 }
 
 /* 13.5: alpha2 F(flow/alpha); scale: rated value, of which the result is a share */
@@ -311,24 +320,45 @@ static affine by_affinity(const kent_pump_curve *c, const double *y,
                     2.0 * alpha * value - v * by_flow};
 }
 
+/* 13.16: Suter's torque, and what the power of a head besides Suter's adds to it. more:
+ * that head, over the rated one; lost: torque of other losses than Suter's. */
+static affine torque_of(const kent_pump_curve *c, double v, double alpha, double x,
+                        const affine *more)
+{
+    curve_value w = suter(c->wb, c->wb_slope, x);
+    const curve_value lost = added(c->wb_join, c->last_angle, x);
+    w.value += lost.value;
+    w.slope += lost.slope;
+    affine b = by_angle(v, alpha, w);
+    if (more->value == 0.0 && more->by_v == 0.0 && more->by_alpha == 0.0) return b;
+    const double e = c->rated_efficiency, t = v / alpha;
+    b.value += e * t * more->value;
+    b.by_v += e * (t * more->by_v + more->value / alpha);
+    b.by_alpha += e * (t * more->by_alpha - t * (more->value / alpha));
+    return b;
+}
+
 kent_pump_point kent_pump_at(const kent_pump_curve *c, double flow, double speed)
 {
     const double v = flow / c->rated_flow, alpha = speed / c->rated_speed;
     const double x = PI + kent_atan2(v, alpha);
     const bool own = alpha > 0.0 && v >= 0.0 && v <= c->last * alpha;
-    affine h, b;
+    affine h = by_angle(v, alpha, suter(c->wh, c->wh_slope, x)), more, b;
 
     if (own) {
+        const affine suters = h;
         h = by_affinity(c, c->head, c->head_slope, c->rated_head, v, alpha);
+        more = (affine){h.value - suters.value, h.by_v - suters.by_v,
+                        h.by_alpha - suters.by_alpha};
     } else {
-        h = by_angle(v, alpha, suter(c->wh, c->wh_slope, x),
-                     added(c->wh_join, c->last_angle, x));
+        more = by_angle(v, alpha, added(c->wh_join, c->last_angle, x));
+        h = (affine){h.value + more.value, h.by_v + more.by_v,
+                     h.by_alpha + more.by_alpha};
     }
     if (own && c->own_torque) {
         b = by_affinity(c, c->torque, c->torque_slope, c->rated_torque, v, alpha);
     } else {
-        b = by_angle(v, alpha, suter(c->wb, c->wb_slope, x),
-                     added(c->wb_join, c->last_angle, x));
+        b = torque_of(c, v, alpha, x, &more);
     }
     return (kent_pump_point){c->rated_head * h.value,
                              c->rated_head * h.by_v / c->rated_flow,

@@ -12,7 +12,8 @@
 
 enum { KENT_PUMP_POINTS = 16, KENT_SUTER_POINTS = 89 };
 
-/* Value and slope of what is added to Suter's curve beside the end of the own one. */
+/* Value and slope of what is added to Suter's curve beside the end of the own one: to
+ * its head, and to the torque that its losses ask for. */
 typedef struct kent_pump_join {
     double value, slope;
 } kent_pump_join;

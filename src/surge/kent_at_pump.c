@@ -28,6 +28,7 @@ typedef struct group {
     double from, to, start, ramp; /* of its speed: rad/s; s */
     double next;                  /* rad/s at the step's end, where it is driven */
     double free;                  /* s of this step without power */
+    double share;                 /* of the torque at its end in what acts on it */
     kent_flap flap;
 } group;
 
@@ -60,23 +61,32 @@ typedef struct lift {
     double torque;      /* N m */
 } lift;
 
-/* 13.10: the speed that inertia and the mean of both torques leave at the end. */
+/* 13.10: the speed that inertia and the torque leave at the step's end. As torque grows
+ * with the square of the speed either way, there is one: Newton's method between
+ * brackets finds it. */
 static kent_pump_point run_down(const station *s, const group *g, double flow,
                                 double *speed, double *by_flow)
 {
     const kent_pump_curve *curve = &s->pump->curve;
-    const double c = g->free / (2.0 * s->pump->inertia);
-    double w = g->speed;
+    const double c = g->share * g->free / s->pump->inertia;
+    const double target =
+        g->speed - (1.0 - g->share) * g->free / s->pump->inertia * g->torque;
+    double w = g->speed, low = -INFINITY, high = INFINITY;
     kent_pump_point p = kent_pump_at(curve, flow, w);
 
     for (int i = 0; i < TRIES; i++) {
-        /* Where torque falls as speed rises the denominator is held up: the search
-         * then creeps instead of leaping. */
-        const double step = (w - g->speed + c * (g->torque + p.torque)) /
-                            fmax(1.0 + c * p.torque_by_speed, 0.25);
-        w -= step;
+        const double gap = w - target + c * p.torque;
+        if (gap == 0.0) break;
+        if (gap < 0.0) low = w;
+        if (gap > 0.0) high = w;
+        /* Where torque falls as speed rises the slope is held up. */
+        const double wish = gap / fmax(1.0 + c * p.torque_by_speed, 0.25);
+        const double most = curve->rated_speed + fabs(w);
+        double next = w - fmin(fmax(wish, -most), most);
+        if (fabs(next - w) <= 1e-16 * most) break;
+        if (next <= low || next >= high) next = 0.5 * (low + high);
+        w = next;
         p = kent_pump_at(curve, flow, w);
-        if (fabs(step) <= 1e-15 * (curve->rated_speed + fabs(w))) break;
     }
     *speed = w;
     *by_flow = -c * p.torque_by_flow / fmax(1.0 + c * p.torque_by_speed, 0.25);
@@ -310,6 +320,15 @@ static void merge(station *s)
     }
 }
 
+/* 13.10: half the torque is that at the step's end, and more where the rotor is so
+ * light that it would ring. */
+static double share_of_end(const station *s, const group *g)
+{
+    const kent_pump_point p = kent_pump_at(&s->pump->curve, g->flow, g->speed);
+    const double stiff = g->free * p.torque_by_speed / s->pump->inertia;
+    return stiff > 2.0 ? 1.0 - 1.0 / stiff : 0.5;
+}
+
 /* ---- the device ------------------------------------------------------------------ */
 
 /* m2, of the largest pipe at a pump's delivery, else at its suction; NAN: none. */
@@ -395,6 +414,7 @@ static void move(kent_device_state *state, const kent_schedule *schedule, double
     for (size_t i = 0; i < s->count; i++) {
         group *g = &s->groups[i];
         if (g->mode == DRIVEN) g->next = ramped(g, time);
+        if (g->mode == FREE) g->share = share_of_end(s, g);
         if (g->mode == STANDING || !kent_flap_move(&g->flap, time, g->flow)) continue;
         const bool own_size = s->size_area > 0.0;
         const double flow = own_size ? -g->flow : -g->flow * g->units;

@@ -57,13 +57,13 @@ static void a_trip_is_that_of_an_independent_integration(void **state)
         {40, 12, 1, 0.1682955, 0.7564493, 26.91532},
         {40, 12, 2, 0.1521273, 0.6010088, 15.14291},
         {40, 12, 4, 0.0513926, 0.4451035, 11.51020},
-        {40, 12, 6, -0.0523804, 0.3785623, 12.93056},
-        {40, 12, 10, -0.1947116, -0.2941184, 32.86999},
-        {40, 12, 20, -0.1462413, -1.2482340, 52.00088},
+        {40, 12, 6, -0.0524194, 0.3778291, 12.90219},
+        {40, 12, 10, -0.1947855, -0.2951249, 32.88222},
+        {40, 12, 20, -0.1462293, -1.2481152, 51.99119},
         {180, 2, 1, 0.1879819, 0.9144169, 41.24936},
         {180, 2, 4, 0.1269643, 0.7297843, 28.17741},
-        {180, 2, 10, -0.0627802, 0.4574232, 39.08714},
-        {180, 2, 20, -0.1747423, -0.2448989, 41.00834},
+        {180, 2, 10, -0.0631134, 0.4519549, 38.85114},
+        {180, 2, 20, -0.1757704, -0.2513385, 41.03047},
     };
     static rig r;
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
@@ -161,6 +161,27 @@ static void a_trip_between_steps_counts_from_its_own_time(void **state)
     assert_within(r.flow, at_once.flow, 3e-5 * RATED);
     rig_clear(&r);
     rig_clear(&at_once);
+}
+
+/* A rotor that stops within a share of a step: its speed falls without ringing, and the
+ * torque on it is soon gone. */
+static void a_rotor_without_inertia_does_not_ring(void **state)
+{
+    (void)state;
+    static rig r;
+    rig_pump(&r, 40.0, 1, 1);
+    r.pump.inertia = 0.01; /* 3 ms */
+    r.pump.check_valve = KENT_CHECK_IDEAL;
+    rig_event(&r, KENT_TRIP, 0.0, NAN, 0, NAN);
+    rig_start(&r, AREA, WAVE, RATED, 0.05, 0);
+    double before = 1.0;
+    for (int i = 0; i < 200; i++) {
+        rig_advance(&r);
+        assert_true(speed_share(&r) > 0.0 && speed_share(&r) <= before);
+        before = speed_share(&r);
+        assert_true(rig_told(&r, 1) < 0.02 * r.pump.curve.rated_torque);
+    }
+    rig_clear(&r);
 }
 
 /* Under a lasting head it runs away backwards until no torque is left. At N_s = 147 the
@@ -326,7 +347,7 @@ static void groups_with_one_history_act_as_one(void **state)
         rig_event(&whole, KENT_TRIP, 0.5, NAN, 3, NAN);
         rig_start(&parts, 3.0 * AREA, WAVE, RATED, 0.01, 200);
         rig_start(&whole, 3.0 * AREA, WAVE, RATED, 0.01, 200);
-        for (int i = 0; i < 2000; i++) {
+        for (int i = 0; i < 1000; i++) {
             rig_advance(&parts);
             rig_advance(&whole);
             assert_within(parts.flow, whole.flow, 1e-9 * RATED);
@@ -418,7 +439,7 @@ static void power_restored_onto_a_turning_pump(void **state)
             r.pump.check_valve = valve ? KENT_CHECK_IDEAL : KENT_CHECK_NONE;
             rig_event(&r, KENT_TRIP, 0.0, NAN, 0, NAN);
             rig_event(&r, KENT_START, at[i], 3.0, 0, NAN);
-            rig_start(&r, AREA, WAVE, RATED, 0.02, 100);
+            rig_start(&r, AREA, WAVE, RATED, 0.05, 40);
             march(&r, at[i]);
             const double turning = speed_share(&r);
             if (!valve) assert_true(i < 2 ? turning > 0.0 : turning < -0.3);
@@ -482,6 +503,7 @@ int main(void)
         cmocka_unit_test(the_run_down_behind_a_shut_valve_is_exact_to_second_order),
         cmocka_unit_test(the_rotor_loses_the_energy_it_gives),
         cmocka_unit_test(a_trip_between_steps_counts_from_its_own_time),
+        cmocka_unit_test(a_rotor_without_inertia_does_not_ring),
         cmocka_unit_test(without_a_check_valve_it_runs_away_as_the_tables_say),
         cmocka_unit_test(a_stopped_pump_is_a_resistance),
         cmocka_unit_test(a_ramp_goes_to_its_share_of_the_speed),
