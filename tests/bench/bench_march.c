@@ -99,8 +99,68 @@ static void race(void **state)
     kent_build_clear(&b);
 }
 
+/* Every pipe creeps by five elements. */
+static void make_plastic(kent_model *m)
+{
+    static const double time[] = {0.05, 0.5, 1.5, 5.0, 10.0}; /* s */
+    m->creep = kent_alloc(5, sizeof *m->creep);
+    assert_non_null(m->creep);
+    for (int i = 0; i < 5; i++) {
+        m->creep[m->creep_count++] = (kent_creep){time[i], 1e-11};
+    }
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        m->pipes[i].creep_count = m->creep_count;
+    }
+}
+
+/* What memory costs: the same march with friction and walls that remember. */
+static void remember(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *what;
+        kent_surge_friction friction;
+        bool creep;
+    } kinds[] = {{"engine, quasi-steady", KENT_SURGE_QUASI_STEADY, false},
+                 {"  unsteady", KENT_SURGE_UNSTEADY, false},
+                 {"  quasi-steady, creep", KENT_SURGE_QUASI_STEADY, true},
+                 {"  unsteady, creep", KENT_SURGE_UNSTEADY, true}};
+    enum { KINDS = sizeof kinds / sizeof kinds[0] };
+    kent_build b = network_build();
+    kent_steady *s = NULL;
+    kent_grid *g = NULL;
+    kent_error err = {0};
+    const char *kernel = "";
+    double took[KINDS][RUNS], ratio[KINDS][RUNS];
+
+    make_plastic(b.model);
+    if (kent_steady_solve(b.model, &s, &err) != KENT_OK ||
+        kent_grid_plan(b.model, 20.0, &g, &err) != KENT_OK) {
+        fail_msg("%s", err.what);
+    }
+    for (int i = 0; i < RUNS; i++) {
+        for (int kind = 0; kind < KINDS; kind++) {
+            b.model->solver.friction = kinds[kind].friction;
+            b.model->solver.creep = kinds[kind].creep;
+            took[kind][i] = time_engine(b.model, s, g, &kernel);
+            ratio[kind][i] = took[kind][i] / took[0][i];
+        }
+    }
+    for (int kind = 0; kind < KINDS; kind++) {
+        report(kinds[kind].what, took[kind], g->node_total);
+        qsort(ratio[kind], RUNS, sizeof ratio[kind][0], by_size);
+        if (kind == 0) continue;
+        (void)printf("%-28s median %7.2f  least %7.2f\n", "    over quasi-steady",
+                     ratio[kind][RUNS / 2], ratio[kind][0]);
+    }
+    kent_grid_free(g);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
 int main(void)
 {
-    const struct CMUnitTest tests[] = {cmocka_unit_test(race)};
+    const struct CMUnitTest tests[] = {cmocka_unit_test(race),
+                                       cmocka_unit_test(remember)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
