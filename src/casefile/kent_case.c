@@ -219,6 +219,7 @@ static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
     kent_fill_head(f, path);
     kent_fill_water(f);
     kent_fill_site(f);
+    kent_fill_solver(f); /* pipes ask it whether they creep */
     const kent_status status = kent_fill_tables(f, err);
     if (status != KENT_OK) return status; /* its rows are not to be had */
     for (size_t i = 0; i < LISTS_COUNT && !r->failed; i++) {
@@ -226,10 +227,10 @@ static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
     }
     if (r->failed) return KENT_E_NOMEM;
     kent_fill_rules(f);
+    kent_fill_creep(f);
     kent_fill_ground(f);
     kent_fill_loads(f);
     kent_fill_rules_check(f);
-    kent_fill_solver(f);
     if (r->complaints->count == 0 && f->model->pipe_count == 0 &&
         f->model->note_count == 0) {
         kent_complain(

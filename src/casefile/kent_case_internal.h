@@ -45,6 +45,7 @@ void kent_fill_rules_check(kent_filling *f);
 void kent_fill_ground(kent_filling *f);
 void kent_fill_loads(kent_filling *f);
 void kent_fill_solver(kent_filling *f);
+void kent_fill_creep(kent_filling *f); /* cautions where nothing creeps that should */
 
 /* Moves the index-th element of a list; its place in the model's array stands zeroed.
  */

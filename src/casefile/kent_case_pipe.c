@@ -179,6 +179,36 @@ static void add_creep(kent_filling *f, const kent_creep *rows, size_t count,
     }
 }
 
+/* K: water that differs by less from where creep was found is as warm. */
+static const double CREEP_WARMTH = 5.0;
+
+static void assume_creep(kent_filling *f, const kent_material *material)
+{
+    const double warmth = f->model->water.temperature; /* K */
+    const size_t count = material->creep_count;
+    char what[96];
+    char value[96];
+    char why[260];
+    char found[64];
+    char water[64];
+    (void)snprintf(what, sizeof what, "creep of %s", material->id);
+    (void)snprintf(value, sizeof value, "%zu element%s, %.3g to %.3g s", count,
+                   count == 1 ? "" : "s", material->creep[0].time,
+                   material->creep[count - 1].time);
+    (void)snprintf(why, sizeof why, "catalogue (%s): %s", material->from.status,
+                   material->from.source);
+    kent_fill_assume(f, what, value, why);
+    if (!(fabs(warmth - material->creep_temperature) > CREEP_WARMTH)) return;
+    kent_fill_show(f, material->creep_temperature, KENT_TEMPERATURE, found,
+                   sizeof found);
+    kent_fill_show(f, warmth, KENT_TEMPERATURE, water, sizeof water);
+    kent_notes_add(
+        &f->model->cautions,
+        "creep of %s was found at %s, and the water has %s: a colder wall "
+        "creeps less and damps a surge less than is shown, a warmer one more",
+        material->id, found, water);
+}
+
 /* Elements of a plastic wall: the case's, else the material's. */
 static void fill_creep(kent_filling *f, kent_record *record,
                        const kent_material *material, kent_pipe *p)
@@ -187,9 +217,12 @@ static void fill_creep(kent_filling *f, kent_record *record,
     const size_t count = kent_record_creep(&f->reader, record, own);
     if (kent_record_has(record, "creep")) {
         add_creep(f, own, count, p);
-        kent_notes_add(&f->model->cautions,
-                       "creep of pipe walls is read, but surges are worked out with "
-                       "elastic walls: a plastic pipe damps them more than is shown");
+        if (!f->model->solver.creep) {
+            kent_notes_add(&f->model->cautions,
+                           "creep of pipe walls is read, but creep = true is not said "
+                           "in solver: surges are worked out with elastic walls, and a "
+                           "plastic pipe damps them more than is shown");
+        }
         if (record->sound && material && !material->plastic) {
             kent_record_complain(&f->reader, record, "creep",
                                  "creep is of plastic walls, and %s is none; leave it "
@@ -204,7 +237,19 @@ static void fill_creep(kent_filling *f, kent_record *record,
         }
         p->creep_first = f->creep_first;
         p->creep_count = material->creep_count;
+        if (f->model->solver.creep) assume_creep(f, material);
     }
+}
+
+/* How far a wall creeps hangs on Poisson's ratio, which nobody needs to give beside a
+ * wave speed. */
+static void check_creep(kent_filling *f, kent_record *record, const kent_pipe *p)
+{
+    if (!record->sound || !f->model->solver.creep || p->creep_count == 0) return;
+    if (!isnan(p->poisson)) return;
+    kent_record_complain(&f->reader, record, NULL,
+                         "how far its wall creeps hangs on poisson_ratio; give it, or "
+                         "material, or leave creep out of solver");
 }
 
 /* A turn against the pipe at its start is for a layout without coordinates. */
@@ -251,5 +296,15 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
     fill_material(f, record, material, p);
     fill_friction(f, record, material, p);
     fill_joint(f, record, p);
+    check_creep(f, record, p);
     check_branch_turn(f, record, p);
+}
+
+void kent_fill_creep(kent_filling *f)
+{
+    const kent_model *m = f->model;
+    if (!m->solver.creep || m->pipe_count == 0 || m->creep_count > 0) return;
+    kent_notes_add(&f->model->cautions,
+                   "creep = true in solver, but no pipe has elements of creep, nor a "
+                   "material that has: all walls are elastic");
 }

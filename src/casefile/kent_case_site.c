@@ -116,6 +116,12 @@ void kent_fill_solver(kent_filling *f)
         s->place =
             kent_tree_place(f->reader.tree, kent_record_field(&r, "time_step")->twig);
     }
+    if (s->friction == KENT_SURGE_UNSTEADY) {
+        kent_fill_assume(f, "friction of past accelerations",
+                         "Zielke where laminar, else Vardy and Brown 2003",
+                         "by the steady flow of each span, or 1 m/s where it is slower "
+                         "than 0.05 m/s: theory 16.13");
+    }
     const double reaches = kent_record_number_or(&r, "min_reaches", s->min_reaches);
     const double rows = kent_record_number_or(&r, "history_rows", s->history_rows);
     if (!r.sound) return;

@@ -37,6 +37,7 @@ typedef struct kent_material {
     bool plastic;
     kent_creep creep[KENT_CREEP_ROWS]; /* [creep_count] */
     size_t creep_count;
+    double creep_temperature;                   /* K, that it was found at; NAN */
     kent_derating derating[KENT_DERATING_ROWS]; /* [derating_count] rising */
     size_t derating_count;
     kent_provenance from;

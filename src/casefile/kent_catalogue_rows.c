@@ -50,14 +50,15 @@ void kent_catalogue_add_material(kent_reader *r, kent_record *record, kent_catal
     kent_material *m =
         kent_catalogue_grown(r, (void **)&c->materials, &c->material_count, sizeof *m);
     if (!m) return;
-    *m = (kent_material){.modulus = kent_record_number(record, "elastic_modulus"),
-                         .poisson = kent_record_number(record, "poisson_ratio"),
-                         .density = kent_record_number(record, "density"),
-                         .roughness = kent_record_number(record, "roughness"),
-                         .lining_modulus =
-                             kent_record_number_or(record, "lining_modulus", 0.0),
-                         .plastic = kent_record_switch(record, "plastic", false),
-                         .from = kent_record_provenance(record)};
+    *m = (kent_material){
+        .modulus = kent_record_number(record, "elastic_modulus"),
+        .poisson = kent_record_number(record, "poisson_ratio"),
+        .density = kent_record_number(record, "density"),
+        .roughness = kent_record_number(record, "roughness"),
+        .lining_modulus = kent_record_number_or(record, "lining_modulus", 0.0),
+        .creep_temperature = kent_record_number(record, "creep_temperature"),
+        .plastic = kent_record_switch(record, "plastic", false),
+        .from = kent_record_provenance(record)};
     kent_record_copy(record, "id", NULL, m->id, sizeof m->id);
     m->creep_count = kent_record_creep(r, record, m->creep);
     read_derating(r, record, m);

@@ -711,6 +711,8 @@ const kent_key KENT_KEYS[] = {
              "modulus of the usual lining"),
     SWITCH("material", "plastic", "false", "creeps, and is weaker when warm"),
     LIST("material", "creep", "", "none", "pairs (retardation time, compliance)"),
+    QUANTITY("material", "creep_temperature", KENT_TEMPERATURE, WITHIN(273.15, 373.15),
+             "none", "temperature that creep was found at"),
     LIST("material", "derating", "", "none",
          "pairs (temperature, share of the ratings that is left), of a plastic"),
     PROVENANCE("material"),

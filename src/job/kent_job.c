@@ -199,12 +199,8 @@ static kent_status kent_job_refuses_devices(const kent_model *m, kent_error *err
     const char *what = NULL;
     if (m->device_count > 0) {
         what = kent_device_word(m->devices[0].kind);
-    } else if (m->solver.friction == KENT_SURGE_UNSTEADY) {
-        what = "solver.friction = \"unsteady\"";
     } else if (m->solver.column_separation == KENT_SEPARATION_VAPOUR) {
         what = "solver.column_separation = \"vapour-cavity\"";
-    } else if (m->solver.creep) {
-        what = "solver.creep = true";
     }
     if (!what) return KENT_OK;
     return kent_error_set(err, KENT_E_INPUT, m->file_count > 0 ? m->files[0] : "case",

@@ -41,8 +41,10 @@ double kent_recall_softness(const kent_model *m, const kent_span *span,
                             double wave_speed)
 {
     const kent_pipe *pipe = &m->pipes[span->pipe];
+    const double between = 0.5 * (pipe->outside_diameter - pipe->inside_diameter);
     const kent_wall wall = {.bore = span->bore,
-                            .thickness = pipe->wall,
+                            .thickness =
+                                isnan(pipe->wall) ? between - pipe->lining : pipe->wall,
                             .modulus = pipe->modulus,
                             .poisson = pipe->poisson,
                             .lining = pipe->lining,
@@ -154,8 +156,9 @@ static kent_status measure(const kent_model *m, const kent_steady *s,
             char where[sizeof err->where];
             kent_model_place_text(m, pipe->place, where, sizeof where);
             return kent_error_set(err, KENT_E_INPUT, where,
-                                  "pipe %s creeps, and how far hangs on its wall: give "
-                                  "wall, or set creep = false in solver",
+                                  "pipe %s creeps, and how far hangs on its wall and "
+                                  "poisson_ratio: give them, or set creep = false in "
+                                  "solver",
                                   pipe->id);
         }
         need->walls++;

@@ -21,7 +21,8 @@ typedef struct kent_recall {
 extern const double KENT_RECALL_SLOW, KENT_RECALL_AT_REST;
 
 /* *out NULL where there is nothing to remember. Takes terms + 2 numbers a node and
- * span. Fails with KENT_E_INPUT where a pipe creeps whose wall is not known. */
+ * span. Fails with KENT_E_INPUT where a pipe creeps of whose wall too little is known.
+ */
 kent_status kent_recall_new(const kent_model *m, const kent_steady *s,
                             const kent_grid *grid, const kent_waves *w,
                             kent_recall **out, kent_error *err);
@@ -38,7 +39,7 @@ void kent_recall_pull(const kent_recall *r, const kent_kernel *kernel, kent_wave
 void kent_recall_yield(const kent_recall *r, const kent_kernel *kernel, kent_waves *w);
 
 /* How far a pipe's wall gives way late, of 1/Pa compliance: a^2 rho c1 D/e (16.22),
- * with the wave speed used (m/s). NAN where the wall is not known. */
+ * with the wave speed used (m/s). NAN where wall or Poisson's ratio are not known. */
 double kent_recall_softness(const kent_model *m, const kent_span *span,
                             double wave_speed);
 

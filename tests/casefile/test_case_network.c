@@ -78,6 +78,7 @@ static kent_catalogue *with_a_plastic(void)
         m->derating[1] = (kent_derating){313.15, 0.8};
         m->creep_count = 1;
         m->creep[0] = (kent_creep){0.05, 1e-10};
+        m->creep_temperature = 293.15;
     }
     for (size_t i = 0; i < c->pipe_count; i++) {
         if (strcmp(c->pipes[i].material, "ductile-iron") != 0) continue;
@@ -262,6 +263,55 @@ static void creep_is_the_case_s_or_the_material_s(void **state)
     kent_catalogue_free(c);
 }
 
+static void creep_is_asked_for_in_solver(void **state)
+{
+    (void)state;
+    static const char ASKED[] =
+        "solver = { creep = true; friction = \"unsteady\"; };\npoints";
+    static const char OWN[] = "creep = ( ( \"0.05 s\", \"1.057e-10 1/Pa\" ) ); "
+                              "pressure_rating";
+    static const char UNUSED[] = "creep of pipe walls is read, but";
+    static const char COLD[] =
+        "of ductile-iron was found at 20 degC, and the water has "
+        "12 degC: a colder wall creeps less";
+    kent_catalogue *c = with_a_plastic();
+    char *text = replaced(MAIN_CASE, "points", ASKED);
+    char *own = replaced(text, "pressure_rating", OWN);
+    kent_model *m = read_sound(c, text);
+    assert_true(m->solver.creep);
+    const char *note = assumed(m, "creep of ductile-iron");
+    assert_non_null(note);
+    assert_memory_equal(note, "1 element, 0.05 to 0.05 s\tcatalogue (", 37);
+    assert_non_null(assumed(m, "friction of past accelerations"));
+    assert_int_equal(cautions_with(m, COLD), 1);
+    kent_model_free(m);
+
+    m = read_sound(c, own); /* of the other pipe it is still the material's */
+    assert_int_equal(cautions_with(m, UNUSED), 0);
+    assert_int_equal(cautions_with(m, COLD), 1);
+    kent_model_free(m);
+
+    for (size_t i = 0; i < c->material_count; i++) {
+        c->materials[i].creep_temperature = 288.15; /* within 5 K */
+    }
+    m = read_sound(c, text);
+    assert_int_equal(cautions_with(m, "was found at"), 0);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+
+    c = read_catalogue();
+    m = read_sound(c, text);
+    assert_int_equal(cautions_with(m, "no pipe has elements of creep"), 1);
+    kent_model_free(m);
+    m = read_sound(c, MAIN_CASE);
+    assert_int_equal(cautions_with(m, "creep"), 0);
+    assert_null(assumed(m, "friction of past accelerations"));
+    kent_model_free(m);
+    free(text);
+    free(own);
+    kent_catalogue_free(c);
+}
+
 static void states_hold_their_levels_and_factors(void **state)
 {
     (void)state;
@@ -420,6 +470,7 @@ int main(void)
         cmocka_unit_test(water_too_warm_for_a_plastic_is_refused),
         cmocka_unit_test(ratings_by_an_unstated_temperature_say_so),
         cmocka_unit_test(creep_is_the_case_s_or_the_material_s),
+        cmocka_unit_test(creep_is_asked_for_in_solver),
         cmocka_unit_test(states_hold_their_levels_and_factors),
         cmocka_unit_test(a_scenario_starts_from_the_states_it_names),
         cmocka_unit_test(a_style_of_stations_that_is_not_shown_is_said),

@@ -118,6 +118,7 @@ static void pe100_creeps_as_a_laboratory_pipe_did(void **state)
     for (size_t k = 0; k < 2; k++) {
         const kent_material *m = sure_material(c, IDS[k]);
         assert_int_equal(m->creep_count, 5);
+        assert_close(m->creep_temperature, 293.15, 1e-12);
         for (size_t i = 0; i < 5; i++) {
             assert_close(m->creep[i].time, ROWS[i][0], 1e-12);
             assert_close(m->creep[i].compliance, ROWS[i][1], 1e-12);

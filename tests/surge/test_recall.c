@@ -493,13 +493,34 @@ static void a_wall_that_is_not_known_cannot_creep(void **state)
     march m = march_new(&b, 60.0, -1, &VALVE, 1, 1);
     kent_marcher *k = NULL;
     kent_error err = {0};
-    b.model->pipes[2].wall = (double)NAN;
+    b.model->pipes[2].thin_wall = false;
+    b.model->pipes[2].poisson = (double)NAN;
     assert_int_equal(
         kent_marcher_new(b.model, m.steady, m.grid, 0, &VALVE, 1, 1, &k, &err),
         KENT_E_INPUT);
     assert_string_equal(err.where, "built.cfg:102");
-    assert_non_null(strstr(err.what, "give wall, or set creep = false"));
+    assert_non_null(strstr(err.what, "poisson_ratio: give them, or set creep = false"));
     march_clear(&m);
+    kent_build_clear(&b);
+}
+
+/* Beside a wave speed the wall need not be stated: it is what lies between the
+ * diameters. a^2 rho c1 D/e by hand. */
+static void a_wall_is_what_lies_between_the_diameters(void **state)
+{
+    (void)state;
+    kent_build b = build_line(&PLASTIC);
+    kent_build_derive(&b);
+    const double want = 395.0 * 395.0 * 1000.0 * 0.0506 / 0.0063;
+    const kent_span *span = &b.model->spans[0];
+    assert_close(kent_recall_softness(b.model, span, 395.0), want, 1e-12);
+    b.model->pipes[0].wall = (double)NAN;
+    assert_close(kent_recall_softness(b.model, span, 395.0), want, 1e-12);
+    b.model->pipes[0].thin_wall = false;
+    b.model->pipes[0].poisson = 0.4;
+    b.model->pipes[0].axial_support = KENT_FIXED_THROUGHOUT;
+    const double c1 = 2.0 * 0.0063 / 0.0506 * 1.4 + 0.0506 / 0.0569 * 0.84; /* 2.5 */
+    assert_close(kent_recall_softness(b.model, span, 395.0), c1 * want, 1e-12);
     kent_build_clear(&b);
 }
 
@@ -537,6 +558,7 @@ int main(void)
         cmocka_unit_test(either_makes_a_surge_die_sooner),
         cmocka_unit_test(what_is_not_asked_for_costs_nothing),
         cmocka_unit_test(a_wall_that_is_not_known_cannot_creep),
+        cmocka_unit_test(a_wall_is_what_lies_between_the_diameters),
         cmocka_unit_test(a_span_remembers_by_its_steady_flow),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
