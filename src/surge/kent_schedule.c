@@ -130,8 +130,8 @@ kent_status kent_schedule_new(const kent_model *m, int scenario, kent_schedule *
     }
     for (size_t i = 0; i < of->event_count; i++) {
         const kent_event *e = &m->events[of->event_first + i];
-        if (!kent_schedule_course(s, e->kind, e->target))
-            add_course(m, of, e, s, &used);
+        if (kent_schedule_course(s, e->kind, e->target)) continue;
+        add_course(m, of, e, s, &used);
     }
     *out = s;
     return KENT_OK;

@@ -30,6 +30,7 @@ enum {
     AIR_VESSELS,
     RELIEF_VALVES,
     AIR_VALVES,
+    BURSTS,
     LISTS
 };
 
@@ -390,6 +391,15 @@ int kent_build_air_valve(kent_build *b, const char *id, const char *at,
                           .place = device_place(m->air_valve_count)};
     name(v->id, id);
     return (int)m->air_valve_count - 1;
+}
+
+int kent_build_burst(kent_build *b, const char *at)
+{
+    kent_model *m = b->model;
+    m->bursts = one_more(b, BURSTS, m->bursts, &m->burst_count, sizeof *m->bursts);
+    m->bursts[m->burst_count - 1] =
+        (kent_burst){point_named(b, at), -1, device_place(m->burst_count)};
+    return (int)m->burst_count - 1;
 }
 
 /* ---- scenarios ------------------------------------------------------------------- */

@@ -21,7 +21,7 @@
 
 #include "kent_model.h"
 
-enum { KENT_BUILD_LISTS = 23 };
+enum { KENT_BUILD_LISTS = 24 };
 
 typedef struct kent_build {
     kent_model *model;
@@ -83,6 +83,9 @@ int kent_build_relief_valve(kent_build *b, const char *id, const char *at,
 /* One, coefficients 0.6, no slam. */
 int kent_build_air_valve(kent_build *b, const char *id, const char *at,
                          double admission_orifice, double release_orifice);
+
+/* For an event to break; events[].coefficient is 0 until set. */
+int kent_build_burst(kent_build *b, const char *at);
 
 int kent_build_scenario(kent_build *b, const char *id, double duration); /* s */
 
