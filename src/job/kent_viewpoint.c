@@ -8,7 +8,8 @@ typedef struct looks {
     kent_watch *place; /* [point_count] the first, in order of spans and then along the
                           route, where the point is met; span -1: on no pipe */
     int *valve;        /* [point_count] that stands there; -1: none */
-    int *device;       /* [point_count] the first that stands there; -1: none */
+    int *device;       /* [point_count] the first that stands there, bursts apart, whose
+                          pipe is whole in other scenarios; -1: none */
     bool *wanted;      /* [point_count] its history is kept */
 } looks;
 
@@ -29,6 +30,7 @@ static void find_places(const kent_model *m, const looks *l)
         l->valve[m->valves[i - 1].point] = (int)i - 1; /* the first stays */
     }
     for (size_t i = m->device_count; i > 0; i--) {
+        if (m->devices[i - 1].kind == KENT_DEVICE_BURST) continue;
         l->device[m->devices[i - 1].point] = (int)i - 1;
     }
 }
