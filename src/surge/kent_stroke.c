@@ -46,7 +46,7 @@ double kent_stroke_opening(const kent_stroke *stroke, double capacity, double fl
                            const double head[2], double wish)
 {
     const double drop = head[0] - head[1];
-    if (flow > 0.0 && drop > 0.0) {
+    if (drop > 0.0) { /* shut where nothing flows down it */
         return fmin(fmax(flow / (capacity * sqrt(drop)), stroke->least), stroke->most);
     }
     return wish > 0.0 ? stroke->least : stroke->most;

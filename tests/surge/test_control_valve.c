@@ -122,6 +122,18 @@ static void it_shuts_where_the_pressure_behind_stays_above(void **state)
     lone_clear(&l);
 }
 
+/* Nothing flows at t = 0 and rounding has left the head behind a trifle below what it
+ * holds: it is shut, not on its way there from fully open. */
+static void at_rest_it_is_shut_whatever_rounding_left(void **state)
+{
+    (void)state;
+    lone l;
+    kent_control_valve valve = control_of(KENT_HOLDS_DOWNSTREAM, 8.0);
+    control_new(&l, &valve, 0.0, 80.0, 50.0 - 1e-13);
+    assert_true(lone_told(&l, 0) == 0.0);
+    lone_clear(&l);
+}
+
 static void it_lets_nothing_back(void **state)
 {
     (void)state;
@@ -176,6 +188,7 @@ int main(void)
         cmocka_unit_test(it_overshoots_by_what_its_travel_leaves_and_comes_back),
         cmocka_unit_test(it_is_fully_open_where_it_cannot_hold),
         cmocka_unit_test(it_shuts_where_the_pressure_behind_stays_above),
+        cmocka_unit_test(at_rest_it_is_shut_whatever_rounding_left),
         cmocka_unit_test(it_lets_nothing_back),
         cmocka_unit_test(without_times_it_follows_at_once),
         cmocka_unit_test(its_law_has_one_answer_and_true_slopes),
