@@ -56,7 +56,7 @@ static void each_refused_allocation_of_a_case_is_out_of_memory(void **state)
     for (size_t i = 0; i < c->material_count; i++) {
         c->materials[i].plastic = true; /* may creep */
     }
-    const char *const texts[] = {SOUND_CASE, creeping, together};
+    const char *const texts[] = {SOUND_CASE, creeping, together, DEVICE_CASE};
     for (size_t i = 0; i < sizeof texts / sizeof texts[0]; i++) {
         reading r = {.catalogue = c};
         write_bytes(r.path, texts[i], strlen(texts[i]));

@@ -30,11 +30,14 @@ static void each_refused_allocation_is_out_of_memory(void **state)
     kent_build_point(&b, "E", 200.0, 0.0, 0.0);
     kent_build_point(&b, "D", 100.0, 50.0, 0.0);
     kent_build_point(&b, "X", 7.0, 7.0, 7.0); /* cautioned */
-    kent_build_pipe(&b, "A", "R P E", 0.3, 1000.0);
+    kent_build_point(&b, "Q", 50.0, 15.0, 0.0);
+    kent_build_pipe(&b, "A", "R Q P E", 0.3, 1000.0);
     kent_build_pipe(&b, "C", "P D", 0.1, 1000.0);
     b.model->points[3].at.y = 30.4; /* an end close to its tee: one fitting */
     b.model->pipes[1].joint = KENT_FLANGED;
     kent_build_fixed_level(&b, "R", 50.0);
+    kent_build_check_valve(&b, "NR", "Q", "P");
+    kent_build_air_vessel(&b, "V", "D", 1.0, 0.5);
 
     /* More than ten: it does allocate, so that something was tested. */
     assert_true(kent_allocations_needed(derive, b.model) > 10);
