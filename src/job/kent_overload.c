@@ -212,6 +212,8 @@ void kent_overload_judge(kent_results *r)
         judge_steady(r, i);
     }
     for (size_t i = 0; i < r->scenario_count; i++) {
+        const int scenario = r->scenarios[i].scenario;
+        if (r->model->scenarios[scenario].for_comparison) continue;
         judge_march(r, &r->scenarios[i]);
     }
     say_unrated(r, KENT_RATING_SERVICE, "pressure", "what the main reaches there");
@@ -242,6 +244,7 @@ kent_worst kent_overload_of_marches(const kent_results *r)
     kent_worst worst = {.pressure = NAN, .level = NAN, .point = -1, .when = ""};
     for (size_t i = 0; i < r->scenario_count; i++) {
         const kent_scenario_result *run = &r->scenarios[i];
+        if (m->scenarios[run->scenario].for_comparison) continue;
         for (size_t s = 0; s < m->span_count; s++) {
             const reached at = highest_of_march(m, run, s);
             if (!isfinite(at.pressure) || at.pressure <= worst.pressure) continue;

@@ -50,6 +50,7 @@ static void take_scenarios(const kent_results *r, const kent_fitting *fitting,
     const kent_model *m = r->model;
     for (size_t s = 0; fitting->point >= 0 && s < r->scenario_count; s++) {
         const kent_peak *peak = &r->scenarios[s].points[fitting->point];
+        if (m->scenarios[r->scenarios[s].scenario].for_comparison) continue;
         const double z = fitting->at.z;
         const double high = kent_model_pressure(m, peak->highest_head, z);
         const double low = kent_model_pressure(m, peak->lowest_head, z);

@@ -491,6 +491,8 @@ static void print_overall(kent_page *page)
     kent_text words = {0};
     if (count < 2) return;
     for (size_t i = 0; i < count; i++) {
+        const int scenario = page->results->scenarios[i].scenario;
+        if (page->model->scenarios[scenario].for_comparison) continue;
         const kent_extreme h = kent_extreme_highest(page->results, i);
         const kent_extreme l = kent_extreme_lowest(page->results, i);
         if (!(h.pressure <= high.pressure)) high = h;

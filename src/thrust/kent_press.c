@@ -77,7 +77,7 @@ static void press_take_marches(const kent_recorder *r, size_t fitting, size_t po
     const kent_model *m = r->model;
 
     for (size_t i = 0; i < m->march_count; i++) {
-        if (!r->slots[i].started) continue;
+        if (!kent_recorder_counts(r, i)) continue;
         const kent_seen *seen = &r->slots[i].seen[fitting];
         const double head = whole ? seen->highest : seen->highest_head[port];
         press_take(

@@ -457,6 +457,13 @@ static void seen_take_heads(const kent_recorder *r, const kent_slot *slot,
     }
 }
 
+bool kent_recorder_counts(const kent_recorder *r, size_t march)
+{
+    const kent_model *m = r->model;
+    return r->slots[march].started &&
+           !m->scenarios[m->marches[march].scenario].for_comparison;
+}
+
 /* The highest head on each side of a valve: what presses on it once it is shut. */
 static void seen_take_faces(const kent_recorder *r, const kent_trace *trace,
                             size_t index, kent_seen *seen)

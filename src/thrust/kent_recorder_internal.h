@@ -71,6 +71,9 @@ unsigned long long kent_level_of(double square);
 /* s that the resultant was above 0.9 of its peak. */
 double kent_seen_above_90_percent(const kent_seen *seen, double step);
 
+/* Whether a march was run, and may decide a load case. */
+bool kent_recorder_counts(const kent_recorder *r, size_t march);
+
 /* Whether the fitting stands in the network, not on given ports. */
 bool kent_fitting_in_network(const kent_fitting *f);
 

@@ -457,6 +457,42 @@ static void more_than_a_hundredth_of_free_gas_is_seen(void **state)
     kent_build_clear(&b);
 }
 
+/* ---- pumps ----------------------------------------------------------------------- */
+
+/* A pump of the quiet main; times: its inertia over that of the regression. */
+static kent_build with_inertia(double times)
+{
+    kent_build b = quiet_main();
+    kent_model *m = b.model;
+    kent_build_point(&b, "S", -500.0, 0.0, m->points[0].at.z);
+    kent_build_pipe(&b, "C", "S R", 0.3, 1000.0);
+    const int p = kent_build_pump(&b, "PS", "S", NULL, 40.0, 0.05, 30.0);
+    m->pumps[p].suction_level = m->fixed_levels[0].level - 25.0;
+    const kent_pump_curve *c = &m->pumps[p].curve;
+    const double power =
+        m->water.density * m->gravity * c->rated_flow * c->rated_head / 0.8;
+    m->pumps[p].inertia = times * kent_pump_inertia_estimate(power, c->rated_speed);
+    kent_build_derive(&b);
+    return b;
+}
+
+/* GD2, in kg m2 as well, is four times the moment of inertia. */
+static void a_moment_of_inertia_that_may_be_gd2_is_seen(void **state)
+{
+    (void)state;
+    static const double FINE[] = {0.5, 1.0, 2.7}, SUSPECT[] = {2.9, 4.0, 40.0};
+    for (size_t i = 0; i < 3; i++) {
+        kent_build b = with_inertia(FINE[i]);
+        assert_quiet(&b);
+        kent_build_clear(&b);
+        b = with_inertia(SUSPECT[i]);
+        assert_raised(&b, "GD2 is four times");
+        b.model->pumps[0].inertia_estimated = true; /* nobody's slip */
+        assert_quiet(&b);
+        kent_build_clear(&b);
+    }
+}
+
 /* ---- ground ---------------------------------------------------------------------- */
 
 static void a_cover_of_decimetres_or_of_ten_metres_is_seen(void **state)
@@ -546,6 +582,7 @@ int main(void)
         cmocka_unit_test(a_zone_whose_stations_are_counted_twice_is_seen),
         cmocka_unit_test(a_test_by_rule_below_the_still_water_of_another_main_is_seen),
         cmocka_unit_test(more_than_a_hundredth_of_free_gas_is_seen),
+        cmocka_unit_test(a_moment_of_inertia_that_may_be_gd2_is_seen),
         cmocka_unit_test(a_cover_of_decimetres_or_of_ten_metres_is_seen),
         cmocka_unit_test(a_bearing_beyond_the_ground_s_own_is_seen),
         cmocka_unit_test(many_of_a_kind_are_one_alarm),

@@ -181,6 +181,35 @@ static void a_scenario_is_held_against_the_rating_with_surge(void **state)
     kent_build_clear(&b);
 }
 
+/* What is marched to be set beside another decides nothing. */
+static void a_scenario_for_comparison_decides_no_limit_and_no_load_case(void **state)
+{
+    (void)state;
+    for (int aside = 0; aside < 2; aside++) {
+        kent_build b = sagging_main();
+        b.model->pipes[0].surge_rating = 4.5e5;
+        b.model->loads.test_rule = KENT_TEST_EN805_CALCULATED;
+        b.model->loads.test_gauge = 0;
+        b.model->scenarios[0].for_comparison = aside == 1;
+        kent_results *r = run(&b);
+        size_t named = 0;
+        for (size_t f = 0; f < r->loads->fitting_count; f++) {
+            const kent_fitting_loads *l = &r->loads->fittings[f];
+            for (size_t k = 0; k < l->count; k++) {
+                named += l->cases[k].scenario == 0;
+            }
+        }
+        assert_int_equal(r->scenario_count, 1); /* it is marched all the same */
+        assert_int_equal(named > 0, aside == 0);
+        assert_int_equal(caution(r, "in shut, rated") != NULL, aside == 0);
+        assert_int_equal(r->limit_exceeded, aside == 0);
+        assert_int_equal(strcmp(r->loads->test.design.when, "shut") == 0, aside == 0);
+        assert_false(r->loads->test.partial);
+        kent_results_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 /* A surge that happens every day tires the pipe: what it is rated for now and then does
  * not serve. Without a rating of its own it is held as any surge. */
 static void a_scenario_that_recurs_is_held_against_its_own_rating(void **state)
@@ -315,6 +344,7 @@ int main(void)
         cmocka_unit_test(a_warm_plastic_keeps_a_share_of_its_rating),
         cmocka_unit_test(steady_flow_is_held_against_it_in_every_state),
         cmocka_unit_test(a_scenario_is_held_against_the_rating_with_surge),
+        cmocka_unit_test(a_scenario_for_comparison_decides_no_limit_and_no_load_case),
         cmocka_unit_test(a_scenario_that_recurs_is_held_against_its_own_rating),
         cmocka_unit_test(the_test_is_held_against_its_own_rating_by_elevation),
         cmocka_unit_test(a_pipe_without_a_rating_is_named),
