@@ -166,6 +166,40 @@ static void a_wall_that_follows_at_once_slows_the_wave(void **state)
     kent_build_clear(&b);
 }
 
+/* A line of thick oil whose head falls by 20 m to the valve, shut: in the end it stands
+ * under the level all along and the walls have crept. What came in is the compliance
+ * of water and wall, all elements in full, times the mean rise. */
+static void what_the_walls_take_up_has_come_in(void **state)
+{
+    (void)state;
+    const line l = {277.0, 395.0, 0.0506, 0.5, 1.14e-4, KENT_SURGE_QUASI_STEADY,
+                    400,   true};
+    const kent_watch ends[] = {{0, 0.0}, {0, l.length}};
+    kent_build b = build_line(&l);
+    march m = march_new(&b, 300.0, 0, ends, 2, 1);
+    const kent_span *span = &b.model->spans[0];
+    const double mean_rise = 50.0 - 0.5 * (m.steady->node_head[span->node[0]] +
+                                           m.steady->node_head[span->node[1]]);
+    const double elastic = G * span->area / (l.speed * l.speed); /* m2 */
+    double late = 0.0, came = 0.0, last = 0.0;
+    for (int i = 0; i < ELEMENT_COUNT; i++) {
+        late += ELEMENTS[i].compliance * l.speed * l.speed * 1000.0 * l.bore / 0.0063;
+    }
+    kent_trace trace;
+    kent_error err = {0};
+    for (int step = 0; step * m.grid->step < 300.0; step++) {
+        assert_int_equal(kent_marcher_advance(m.marcher, 1, &trace, &err), 1);
+        const double in = trace.flow[0] - trace.flow[1];
+        if (step > 0) came += 0.5 * (in + last) * m.grid->step;
+        last = in;
+    }
+    assert_true(mean_rise > 8.0);
+    assert_within(trace.head[1], 50.0, 0.001);
+    assert_close(came, elastic * (1.0 + late) * l.length * mean_rise, 0.002);
+    march_clear(&m);
+    kent_build_clear(&b);
+}
+
 /* ---- the passes alone -------------------------------------------------------------
  */
 
@@ -550,6 +584,7 @@ int main(void)
         cmocka_unit_test(laminar_flow_remembers_as_laplace_inversion_says),
         cmocka_unit_test(a_creeping_wall_yields_as_laplace_inversion_says),
         cmocka_unit_test(a_wall_that_follows_at_once_slows_the_wave),
+        cmocka_unit_test(what_the_walls_take_up_has_come_in),
         cmocka_unit_test(no_past_ever_gives_energy_back),
         cmocka_unit_test(the_first_pull_is_the_integral_of_the_weight),
         cmocka_unit_test(the_sum_recalls_what_the_whole_past_says),
