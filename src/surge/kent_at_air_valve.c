@@ -122,7 +122,7 @@ static void settle(kent_device_state *state, double flow, const double head[2])
 static void tell(const kent_device_state *state, double told[KENT_TOLD])
 {
     told[0] = as(state)->volume;
-    told[1] = as(state)->pressure;
+    told[1] = as(state)->mass > 0.0 ? as(state)->pressure : 0.0;
 }
 
 const kent_device_ops KENT_AT_AIR_VALVE = {

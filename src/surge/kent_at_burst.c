@@ -61,8 +61,9 @@ static kent_device_law law(const kent_device_state *state, double flow,
 static void settle(kent_device_state *state, double flow, const double head[2])
 {
     hole *h = of(state);
-    h->discharged += 0.5 * h->step * (h->flow + flow);
-    h->flow = flow;
+    const double passed = h->capacity > 0.0 ? flow : 0.0; /* no rests of a search */
+    h->discharged += 0.5 * h->step * (h->flow + passed);
+    h->flow = passed;
     if (h->capacity > 0.0 && head[0] < h->level) h->sucked = true;
 }
 

@@ -49,10 +49,6 @@ static kent_device_law wish(const relief *r, double flow, double head)
 static kent_status suits(const kent_model *m, const kent_relief_valve *v,
                          const relief *r, double head, kent_error *err)
 {
-    if (!(r->full > r->set)) {
-        return kent_device_refuse(err, m, v->place, v->id,
-                                  "full_open_pressure is not above set_pressure");
-    }
     if (!(r->set > r->level)) {
         return kent_device_refuse(err, m, v->place, v->id,
                                   "at its set_pressure the head is %.2f m, below the "
@@ -144,8 +140,9 @@ static void settle(kent_device_state *state, double flow, const double head[2])
     const double above = head[0] - r->set;
     const double target = fmin(fmax(above / (r->full - r->set), 0.0), 1.0);
     r->opening = fmin(fmax(target, r->stroke.least), r->stroke.most);
-    r->discharged += 0.5 * r->step * (r->flow + flow);
-    r->flow = flow;
+    const double passed = r->opening > 0.0 ? flow : 0.0; /* no rests of a search */
+    r->discharged += 0.5 * r->step * (r->flow + passed);
+    r->flow = passed;
     turn(r, head[0]);
 }
 

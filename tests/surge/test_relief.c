@@ -157,9 +157,6 @@ static void one_that_makes_no_sense_is_refused(void **state)
     kent_relief_valve valve = relief_of(0.05);
     lone_new(&l, &KENT_AT_RELIEF_VALVE, 10.0);
     l.model.relief_valves = &valve;
-    valve.full_open_pressure = valve.set_pressure;
-    lone_refused(&l, 80.0, "full_open_pressure is not above set_pressure");
-    valve = relief_of(0.05);
     valve.discharge_level = 120.0;
     lone_refused(&l, 80.0, "below the discharge_level of 120.00 m");
     valve = relief_of(0.05);
