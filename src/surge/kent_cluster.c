@@ -18,8 +18,7 @@ static const double WORTHWHILE = 1e-4;
 /* Of what the nodes make of a flow: a pivot that is none, and what is added then. */
 static const double SINGULAR = 1e-10, DAMPING = 1e-2;
 
-/* ---- laws of what has no state ----------------------------------------------------
- */
+/* ---- laws of what has no state --------------------------------------------------- */
 
 /* 7.15: its head but for what flows out, which loses velocity head and more. */
 static kent_device_law level_law(const kent_level *level, double q, double head)
@@ -68,8 +67,7 @@ kent_device_law kent_member_law(const kent_member *member, double flow,
     return (kent_device_law){0};
 }
 
-/* ---- one flow ---------------------------------------------------------------------
- */
+/* ---- one flow -------------------------------------------------------------------- */
 
 /* What one member sees of the rest: heads fall as its flow leaves, rise as it comes. */
 typedef struct view {
@@ -121,8 +119,8 @@ static bool find_flow(const view *v, double scale, double *flow, double *gap)
         *flow = q;
         *gap = isnan(f) ? INFINITY : fabs(f);
         if (isnan(f)) return false;
-        if (f == 0.0 || (i > 0 && *gap * per_flow <= HOLDS * scale * slope))
-            return true;
+        const bool holds = i > 0 && *gap * per_flow <= HOLDS * scale * slope;
+        if (f == 0.0 || holds) return true;
         if (f < 0.0) b.low = q;
         if (f > 0.0) b.high = q;
         if ((b.high - b.low) * per_flow <= NO_CHANGE * scale ||
@@ -136,8 +134,7 @@ static bool find_flow(const view *v, double scale, double *flow, double *gap)
     return false;
 }
 
-/* ---- all flows together -----------------------------------------------------------
- */
+/* ---- all flows together ---------------------------------------------------------- */
 
 /* Laid out in the cluster's room. */
 typedef struct work {

@@ -130,8 +130,9 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
     if (status == KENT_OK) {
         status = kent_recall_new(m, s, grid, k->waves, &k->recall, err);
     }
-    if (status == KENT_OK)
+    if (status == KENT_OK) {
         status = kent_ends_new(m, s, k->waves, scenario, &k->ends, err);
+    }
     if (status == KENT_OK) status = kent_schedule_new(m, scenario, &k->schedule, err);
     if (status == KENT_OK) status = make_trace(k, watches, watch_count, block, err);
     if (status != KENT_OK) goto done;

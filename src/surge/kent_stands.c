@@ -3,8 +3,7 @@
 #include <math.h>
 #include <stdlib.h>
 
-/* ---- which nodes belong together --------------------------------------------------
- */
+/* ---- which nodes belong together ------------------------------------------------- */
 
 static int root(int *part, int n)
 {
@@ -54,8 +53,7 @@ static void find_clusters(kent_stands *s, int *part, bool *taken)
     }
 }
 
-/* ---- members ----------------------------------------------------------------------
- */
+/* ---- members --------------------------------------------------------------------- */
 
 /* Where a cluster's nodes and members begin in their stores, while they are filled. */
 typedef struct filling {
@@ -154,8 +152,7 @@ static void fill_clusters(kent_stands *s, const kent_steady *steady, const kent_
     }
 }
 
-/* ---- building ---------------------------------------------------------------------
- */
+/* ---- building -------------------------------------------------------------------- */
 
 static kent_status start_devices(kent_stands *s, const kent_steady *steady,
                                  kent_error *err)
@@ -204,7 +201,7 @@ kent_status kent_stands_new(const kent_model *m, const kent_steady *s, int scena
     k->model = m;
     k->states = kent_alloc(devices, sizeof *k->states);
     k->absent = kent_alloc(devices, sizeof *k->absent);
-    k->members = kent_alloc(devices, sizeof *k->members);
+    k->members = kent_alloc(devices, sizeof(kent_member *));
     k->cluster_of = kent_alloc(nodes, sizeof *k->cluster_of);
     k->nodes = kent_alloc(nodes, sizeof *k->nodes);
     k->node_store = kent_alloc(nodes, sizeof *k->node_store);
@@ -248,8 +245,7 @@ void kent_stands_free(kent_stands *s)
     free(s);
 }
 
-/* ---- marching ---------------------------------------------------------------------
- */
+/* ---- marching -------------------------------------------------------------------- */
 
 void kent_stands_move(kent_stands *s, const kent_schedule *schedule, double time,
                       double step)

@@ -120,8 +120,7 @@ static const kent_device_ops LAWS[KINDS] = {
     {.law = springs}, {.law = lifts},     {.law = is_shut},  {.law = kinks}};
 static const kent_device_ops NEVER = {.law = never}, NOTHING = {.law = is_nothing};
 
-/* ---- clusters at random -----------------------------------------------------------
- */
+/* ---- clusters at random ---------------------------------------------------------- */
 
 static uint64_t seed;
 
@@ -154,7 +153,6 @@ static law_of numbers_of(int kind)
     case 1:
         return (law_of){scaled(1e-2, 1e8), 0.0};
     case 2:
-        return (law_of){scaled(1e-4, 1.0), chance(-50.0, 150.0)};
     case 3:
         return (law_of){scaled(1e-4, 1.0), chance(-50.0, 150.0)};
     case 4: {
@@ -241,7 +239,7 @@ static double missed(const bench *b, double *scale)
         worst = fmax(worst, fabs(law.f) * per_flow / slope);
         *scale = fmax(*scale, fabs(m->flow) * per_flow);
     }
-    for (size_t i = 0; i < b->cluster.node_count; i++) {
+    for (size_t i = 0; i < NODES && i < b->cluster.node_count; i++) {
         const kent_cluster_node *n = &b->nodes[i];
         worst = fmax(worst, fabs(n->c - n->head - taken[i] / n->y));
         *scale = fmax(*scale, fabs(n->c));
@@ -249,8 +247,7 @@ static double missed(const bench *b, double *scale)
     return worst / *scale;
 }
 
-/* ---- tests ------------------------------------------------------------------------
- */
+/* ---- tests ----------------------------------------------------------------------- */
 
 static void whatever_stands_there_has_an_answer_and_only_one(void **state)
 {
@@ -259,7 +256,7 @@ static void whatever_stands_there_has_an_answer_and_only_one(void **state)
     for (uint64_t i = 0; i < CLUSTERS; i++) {
         static bench b;
         size_t at = 0;
-        double gap = 0.0, head[NODES];
+        double gap = 0.0, head[NODES] = {0.0, 0.0};
         seed = i;
         at_random(&b, 1 + i % 3);
         for (int start = 0; start < 3; start++) {
@@ -269,7 +266,7 @@ static void whatever_stands_there_has_an_answer_and_only_one(void **state)
             }
             double scale = 1.0;
             worst = fmax(worst, missed(&b, &scale));
-            for (size_t n = 0; n < b.cluster.node_count; n++) {
+            for (size_t n = 0; n < NODES && n < b.cluster.node_count; n++) {
                 if (start == 0) head[n] = b.nodes[n].head;
                 apart = fmax(apart, fabs(head[n] - b.nodes[n].head) / scale);
             }

@@ -207,12 +207,12 @@ static void close_main(size_t joint, double *heads, size_t steps)
 static void a_joint_at_any_grid_point_changes_nothing(void **state)
 {
     (void)state;
-    enum { COUNT = 1000 };
-    static double whole[2 * COUNT], cut[2 * COUNT];
+    enum { COUNT = 1000, HEADS = 2 * COUNT };
+    static double whole[HEADS], cut[HEADS];
     close_main(0, whole, COUNT);
     for (size_t joint = 1; joint < 12; joint++) {
         close_main(joint, cut, COUNT);
-        for (size_t i = 0; i < 2 * COUNT; i++) {
+        for (size_t i = 0; i < HEADS; i++) {
             assert_within(cut[i], whole[i], 1e-9);
         }
     }

@@ -9,8 +9,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* ---- a main with everything -------------------------------------------------------
- */
+/* ---- a main with everything ------------------------------------------------------ */
 
 /* A pump from a sump, a vessel and a relief valve behind it; a pressure reducing valve
  * and a check valve in line; tanks, an air valve at a crest beside a valve in line, a
@@ -94,8 +93,8 @@ static void without_an_event_nothing_changes(void **state)
             if (kent_marcher_advance(m.marcher, 1000, &trace, &err) != 1000) {
                 fail_msg("%s", err.what);
             }
-            if (n == 0)
-                memcpy(first, trace.devices, trace.device_count * sizeof *first);
+            if (n > 0) continue;
+            memcpy(first, trace.devices, trace.device_count * sizeof *first);
         }
         print_message("heads stray by %g m over 1e5 steps\n", largest_swing(&m));
         assert_within(largest_swing(&m), 0.0, 1e-9);
@@ -213,8 +212,7 @@ static void what_is_left_out_might_never_have_been_there(void **state)
     free(never);
 }
 
-/* ---- where the march must stop ----------------------------------------------------
- */
+/* ---- where the march must stop --------------------------------------------------- */
 
 static void expect_stop(kent_marcher *k, const char *text, const char *more)
 {
@@ -278,8 +276,7 @@ static void what_has_no_answer_is_said_with_place_and_time(void **state)
     kent_build_clear(&b);
 }
 
-/* ---- mains at random --------------------------------------------------------------
- */
+/* ---- mains at random ------------------------------------------------------------- */
 
 static uint64_t seed;
 
@@ -296,7 +293,7 @@ enum { LEAST_PIPES = 3, MOST_PIPES = 6 };
 static const char *name_of(int i)
 {
     static const char *const name[] = {"0", "1", "2", "3", "4", "5", "6", "7"};
-    return name[i];
+    return name[i & 7];
 }
 
 /* Whether anything does. */
@@ -499,12 +496,12 @@ static bool march_one(uint64_t number, double worst[3], double *largest, int *ki
     }
     kent_trace trace;
     kent_error err = {0};
-    instant now = {0}, before = {0};
+    instant now = {0};
     double through[DEVICES] = {0}, first[DEVICES], water = 0.0;
     const double step = run.grid->step;
     assert_in_range(m->device_count, 0, DEVICES);
     for (int i = 0; i < STEPS; i++) {
-        before = now;
+        const instant before = now;
         if (kent_marcher_advance(run.marcher, 1, &trace, &err) != 1) {
             print_message("seed %llu stops: %s\n", (unsigned long long)number,
                           err.what);
