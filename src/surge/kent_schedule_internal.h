@@ -1,6 +1,6 @@
 /* What a scenario does: a value for every instant of each valve (opening), outflow
- * (m3/s), fixed level (m), pump (share of its rated speed) or burst (area, m2) that
- * some event of it touches. */
+ * (m3/s), fixed level (m) or burst (area, m2) that some event of it touches. A pump's
+ * events have no one value, its units part; the pump follows them itself. */
 #ifndef KENT_SCHEDULE_INTERNAL_H
 #define KENT_SCHEDULE_INTERNAL_H
 

@@ -137,6 +137,24 @@ static void a_law_with_a_period_begins_again(void **state)
     plan_clear(&p);
 }
 
+/* What is drawn at a point by the hour, as shares of a day of 24 s. */
+static void what_is_drawn_may_repeat_too(void **state)
+{
+    (void)state;
+    static const kent_law_point law[] = {{0.0, 0.01}, {8.0, 0.05}, {24.0, 0.01}};
+    plan p = plan_new();
+    const int e =
+        kent_build_law(&p.build, 0, KENT_EVENT_OUTFLOW, p.outflow, 5.0, law, 3);
+    p.build.model->events[e].period = 24.0;
+    plan_ready(&p);
+    assert_close(value(&p, 0, 4.9), 0.02, 1e-15); /* the steady one, until then */
+    for (int day = 0; day < 3; day++) {
+        assert_close(value(&p, 0, 5.0 + 24.0 * day + 4.0), 0.03, 1e-13);
+        assert_close(value(&p, 0, 5.0 + 24.0 * day + 16.0), 0.03, 1e-13);
+    }
+    plan_clear(&p);
+}
+
 static void what_no_event_touches_has_no_course(void **state)
 {
     (void)state;
@@ -164,6 +182,7 @@ int main(void)
         cmocka_unit_test(a_law_is_followed_point_by_point),
         cmocka_unit_test(an_event_without_ramp_acts_at_once),
         cmocka_unit_test(a_law_with_a_period_begins_again),
+        cmocka_unit_test(what_is_drawn_may_repeat_too),
         cmocka_unit_test(what_no_event_touches_has_no_course),
         cmocka_unit_test(without_a_scenario_nothing_happens),
     };
