@@ -198,6 +198,11 @@ static void assume_creep(kent_filling *f, const kent_material *material)
     (void)snprintf(why, sizeof why, "catalogue (%s): %s", material->from.status,
                    material->from.source);
     kent_fill_assume(f, what, value, why);
+    kent_notes_add(&f->model->cautions,
+                   "walls of %s creep by elements that were not measured on this pipe "
+                   "(catalogue, %s): they lower peaks; see what the main reaches with "
+                   "creep = false too",
+                   material->id, material->from.status);
     if (!(fabs(warmth - material->creep_temperature) > CREEP_WARMTH)) return;
     kent_fill_show(f, material->creep_temperature, KENT_TEMPERATURE, found,
                    sizeof found);

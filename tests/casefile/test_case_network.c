@@ -284,6 +284,7 @@ static void creep_is_asked_for_in_solver(void **state)
     assert_memory_equal(note, "1 element, 0.05 to 0.05 s\tcatalogue (", 37);
     assert_non_null(assumed(m, "friction of past accelerations"));
     assert_int_equal(cautions_with(m, COLD), 1);
+    assert_int_equal(cautions_with(m, "were not measured on this pipe"), 1);
     kent_model_free(m);
 
     m = read_sound(c, own); /* of the other pipe it is still the material's */
