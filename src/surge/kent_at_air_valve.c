@@ -10,6 +10,9 @@
 static const double PI = 3.14159265358979323846;
 /* m: a steady head this much below the valve is not below it. */
 static const double SAME_LEVEL = 1e-6;
+/* Share of the pipes beside it that air may fill before it is said that it would
+ * spread. Common practice, no source. */
+static const double STAYS = 0.1;
 /* Pa absolute below which the volume of the air goes on along its tangent. */
 static const double LEAST_PRESSURE = 1000.0;
 
@@ -21,6 +24,8 @@ typedef struct valve {
     double step;              /* s */
     double mass, volume;      /* kg, m3 of air under it, of the instant settled last */
     double pressure;          /* Pa gauge, of that air */
+    double room;              /* m3 that it may fill and be thought to stay */
+    bool spread;              /* it has filled more */
 } valve;
 _Static_assert(sizeof(valve) <= KENT_DEVICE_STATE, "an air valve's state");
 
@@ -33,6 +38,18 @@ static const valve *as(const kent_device_state *state)
 static double area(double coefficient, double diameter, int count)
 {
     return coefficient * count * 0.25 * PI * diameter * diameter;
+}
+
+/* m3 of the pipes that end at a node. */
+static double beside(const kent_model *m, int node)
+{
+    double volume = 0.0;
+    const kent_node *at = &m->nodes[node];
+    for (size_t i = 0; i < at->end_count; i++) {
+        const kent_span *span = &m->spans[m->ends[at->end_first + i].span];
+        volume += span->area * span->length;
+    }
+    return volume;
 }
 
 static kent_status start(kent_device_state *state, const kent_model *m, int index,
@@ -61,6 +78,7 @@ static kent_status start(kent_device_state *state, const kent_model *m, int inde
                                      : release,
                 .switch_pressure = switches ? a->switch_pressure : (double)INFINITY,
                 .level = level,
+                .room = STAYS * beside(m, a->node),
                 .weight = m->water.density * m->gravity};
     return KENT_OK;
 }
@@ -112,6 +130,7 @@ static void settle(kent_device_state *state, double flow, const double head[2])
     v->mass = mass_at(v, p).mass;
     v->volume = v->mass > 0.0 ? fmax(v->volume - v->step * flow, 0.0) : 0.0;
     v->pressure = p - v->orifice.outside;
+    if (v->volume > v->room) v->spread = true;
     if (v->pressure > v->switch_pressure && v->mass > 0.0) {
         v->orifice.out = v->switched; /* till it has closed, or lets in again */
     } else if (v->pressure < 0.0 || !(v->mass > 0.0)) {
@@ -125,6 +144,14 @@ static void tell(const kent_device_state *state, double told[KENT_TOLD])
     told[1] = as(state)->mass > 0.0 ? as(state)->pressure : 0.0;
 }
 
+static const char *caution(const kent_device_state *state)
+{
+    return as(state)->spread
+               ? "lets in more air than a tenth of the pipes beside it holds: it would "
+                 "spread along them, which is not followed; what comes after is rough"
+               : NULL;
+}
+
 const kent_device_ops KENT_AT_AIR_VALVE = {
     .quantities = {{"air_volume_m3", "air volume", KENT_VOLUME},
                    {"air_pressure_Pa", "air pressure", KENT_PRESSURE}},
@@ -133,4 +160,5 @@ const kent_device_ops KENT_AT_AIR_VALVE = {
     .law = law,
     .settle = settle,
     .tell = tell,
+    .caution = caution,
 };

@@ -12,6 +12,7 @@ void lone_new(lone *l, const kent_device_ops *ops, double z)
     kent_build_point(b, "Q", 100.0, 0.0, z);
     kent_build_pipe(b, "1", "P Q", 0.5, 1000.0);
     kent_build_fixed_level(b, "Q", z + 20.0);
+    kent_build_derive(b);
     l->model = *b->model;
 }
 

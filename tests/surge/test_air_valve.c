@@ -2,6 +2,7 @@
 #include "lone.h"
 
 #include <math.h>
+#include <string.h>
 
 static const double G = 9.81, PI = 3.14159265358979323846;
 static const double ATMOSPHERE = 101325.0, WATER = 288.15; /* Pa, K */
@@ -246,6 +247,25 @@ static void two_side_by_side_are_one_of_twice_the_area(void **state)
     assert_close(a.at, b.at, 1e-9);
 }
 
+/* The main is 100 m of 0.5 m, 19.6 m3: more than a tenth of it would not stay. */
+static void too_much_air_to_stay_is_said(void **state)
+{
+    (void)state;
+    lone l;
+    kent_air_valve valve = valve_of(0.15, 0.15);
+    valve_new(&l, &valve, 0.01);
+    bool said = false;
+    while (!said && l.time < 20.0) {
+        lone_beside(&l, -5.0, Y);
+        said = l.ops->caution(&l.state) != NULL;
+        assert_true(said == (lone_told(&l, 0) > 0.1 * 100.0 * 0.25 * PI * 0.25));
+    }
+    assert_true(said);
+    lone_beside(&l, 60.0, Y);
+    assert_non_null(strstr(l.ops->caution(&l.state), "spread")); /* it has been */
+    lone_clear(&l);
+}
+
 static void one_above_the_steady_head_is_refused(void **state)
 {
     (void)state;
@@ -283,6 +303,7 @@ int main(void)
         cmocka_unit_test(it_goes_to_the_solution_as_the_step_does),
         cmocka_unit_test(one_that_switches_slams_less),
         cmocka_unit_test(two_side_by_side_are_one_of_twice_the_area),
+        cmocka_unit_test(too_much_air_to_stay_is_said),
         cmocka_unit_test(one_above_the_steady_head_is_refused),
         cmocka_unit_test(its_law_has_one_answer_and_true_slopes),
     };
