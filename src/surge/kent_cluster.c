@@ -51,6 +51,16 @@ static kent_device_law gate_law(const kent_gate *gate, double q, const double he
         per * q * fabs(q) - (head[0] - head[1]), 2.0 * per * fabs(q), {-1.0, 1.0}};
 }
 
+/* 15.12: where the graph of 15.6 meets what flow and head make together. */
+static kent_device_law hollow_law(const kent_hollow *h, double q, double head)
+{
+    if (!h) return (kent_device_law){q, 1.0, {0.0, 0.0}};
+    const double rest = head + q * h->per_flow - h->limit;
+    const kent_hollow_end end = kent_hollow_step(rest, h->volume, h->room, h->gas);
+    return (kent_device_law){
+        h->limit + end.rise - head, end.slope * h->per_flow, {end.slope - 1.0, 0.0}};
+}
+
 kent_device_law kent_member_law(const kent_member *member, double flow,
                                 const double head[2])
 {
@@ -63,6 +73,8 @@ kent_device_law kent_member_law(const kent_member *member, double flow,
         return draw_law(member->draw, flow, head[0]);
     case KENT_MEMBER_GATE:
         return gate_law(member->gate, flow, head);
+    case KENT_MEMBER_HOLLOW:
+        return hollow_law(member->hollow, flow, head[0]);
     }
     return (kent_device_law){0};
 }

@@ -14,12 +14,14 @@
 
 #include "kent_device_internal.h"
 #include "kent_ends_internal.h"
+#include "kent_hollow_internal.h"
 
 typedef enum kent_member_kind {
     KENT_MEMBER_DEVICE,
     KENT_MEMBER_LEVEL,
     KENT_MEMBER_DRAW,
-    KENT_MEMBER_GATE
+    KENT_MEMBER_GATE,
+    KENT_MEMBER_HOLLOW /* what flows out of it makes its node's cavity smaller */
 } kent_member_kind;
 
 typedef struct kent_member {
@@ -34,6 +36,7 @@ typedef struct kent_member {
     const kent_level *level;
     const kent_draw *draw;
     const kent_gate *gate;
+    const kent_hollow *hollow; /* NULL: none, and no flow */
 } kent_member;
 
 typedef struct kent_cluster_node {

@@ -183,6 +183,20 @@ void kent_ends_solve(const kent_ends *e, kent_waves *w)
     }
 }
 
+double kent_knot_arriving(const kent_ends *e, const kent_knot *knot,
+                          const kent_waves *w)
+{
+    kent_line line = {w->m, w->p};
+    return arriving(e->tips + knot->tip_first, knot->tip_count, line);
+}
+
+void kent_knot_send_back(const kent_ends *e, const kent_knot *knot, double head,
+                         const kent_waves *w)
+{
+    kent_line line = {w->m, w->p};
+    send_back(e->tips + knot->tip_first, knot->tip_count, head, line);
+}
+
 /* ---- building -------------------------------------------------------------------- */
 
 static kent_end_kind kind_of(const kent_model *m, const kent_node *node)
@@ -206,7 +220,7 @@ static void add_knot(kent_ends *e, const kent_model *m, const kent_waves *w, int
     const kent_node *at = &m->nodes[node];
     kent_knot *j = &e->knots[e->knot_count++];
 
-    *j = (kent_knot){e->tip_count, at->end_count, 0.0, at->device};
+    *j = (kent_knot){e->tip_count, at->end_count, 0.0, at->device, node};
     for (size_t i = 0; i < at->end_count; i++) {
         const kent_end *end = &m->ends[at->end_first + i];
         const size_t span = (size_t)end->span;

@@ -36,6 +36,7 @@ typedef struct kent_knot {
     size_t tip_first, tip_count;
     double admittance; /* Y = sum 1/B, m2/s */
     int device;        /* into levels, draws or gates; -1 */
+    int node;          /* the model's */
 } kent_knot;
 
 typedef struct kent_run {
@@ -88,6 +89,12 @@ void kent_ends_move(kent_ends *e, const kent_schedule *schedule, double time,
 /* Writes the wave that leaves every end. Whether a device stops the march is in
  * e->stands->stopped. */
 void kent_ends_solve(const kent_ends *e, kent_waves *w);
+
+/* m: C of the waves that arrive at a knot; and a head sent back along all its spans. */
+double kent_knot_arriving(const kent_ends *e, const kent_knot *knot,
+                          const kent_waves *w);
+void kent_knot_send_back(const kent_ends *e, const kent_knot *knot, double head,
+                         const kent_waves *w);
 
 /* What stands at a node, alone: tested with six numbers each. C m, Y m2/s; head m. */
 double kent_level_head(const kent_level *level, double c, double y);

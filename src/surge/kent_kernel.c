@@ -10,13 +10,29 @@
         size_t n, double limit, const double *restrict k, double *restrict p,          \
         double *restrict m, double *restrict highest, double *restrict lowest)         \
     {                                                                                  \
-        return kent_kernel_body(n, limit, 0, k, p, m, highest, lowest);                \
+        return (int64_t)n -                                                            \
+               kent_kernel_body(n, limit, 0, k, p, m, highest, lowest, NULL, NULL);    \
+    }                                                                                  \
+    attribute static int64_t explicit_watch_##level(                                   \
+        size_t n, double limit, const double *restrict k, double *restrict p,          \
+        double *restrict m, double *restrict highest, double *restrict lowest,         \
+        const kent_floor *restrict floors, uint8_t *restrict low)                      \
+    {                                                                                  \
+        return kent_kernel_blocks(n, limit, 0, k, p, m, highest, lowest, floors, low); \
     }                                                                                  \
     attribute static int64_t implicit_##level(                                         \
         size_t n, double limit, const double *restrict k, double *restrict p,          \
         double *restrict m, double *restrict highest, double *restrict lowest)         \
     {                                                                                  \
-        return kent_kernel_body(n, limit, 1, k, p, m, highest, lowest);                \
+        return (int64_t)n -                                                            \
+               kent_kernel_body(n, limit, 1, k, p, m, highest, lowest, NULL, NULL);    \
+    }                                                                                  \
+    attribute static int64_t implicit_watch_##level(                                   \
+        size_t n, double limit, const double *restrict k, double *restrict p,          \
+        double *restrict m, double *restrict highest, double *restrict lowest,         \
+        const kent_floor *restrict floors, uint8_t *restrict low)                      \
+    {                                                                                  \
+        return kent_kernel_blocks(n, limit, 1, k, p, m, highest, lowest, floors, low); \
     }                                                                                  \
     attribute static void recall_##level(const kent_fade *f, double *restrict p,       \
                                          double *restrict m)                           \
@@ -38,10 +54,13 @@ KENT_KERNEL(avx512, __attribute__((target("avx512f"))))
 
 /* Best last. */
 static const kent_kernel KERNELS[] = {
-    {"base", explicit_base, implicit_base, recall_base, yield_base},
+    {"base", explicit_base, implicit_base, explicit_watch_base, implicit_watch_base,
+     recall_base, yield_base},
 #ifdef __x86_64__
-    {"avx2", explicit_avx2, implicit_avx2, recall_avx2, yield_avx2},
-    {"avx512", explicit_avx512, implicit_avx512, recall_avx512, yield_avx512},
+    {"avx2", explicit_avx2, implicit_avx2, explicit_watch_avx2, implicit_watch_avx2,
+     recall_avx2, yield_avx2},
+    {"avx512", explicit_avx512, implicit_avx512, explicit_watch_avx512,
+     implicit_watch_avx512, recall_avx512, yield_avx512},
 #endif
 };
 enum { KERNEL_COUNT = sizeof KERNELS / sizeof KERNELS[0] };

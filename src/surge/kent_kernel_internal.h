@@ -20,7 +20,11 @@
  * f = k d|d|/(1 + 2 k|d|), stable whatever d; limit DBL_MAX then counts NaN alone.
  *
  * The envelopes keep p + m, twice the head: halving is exact and is left to whoever
- * looks. */
+ * looks.
+ *
+ * A watching sweep also marks blocks in which some p or m fell below the block's floor
+ * while it went on its way: as long as none does, no head inside can be low at the next
+ * instant (docs/theory 15.10). */
 #ifndef KENT_KERNEL_INTERNAL_H
 #define KENT_KERNEL_INTERNAL_H
 
@@ -36,9 +40,24 @@ typedef int64_t kent_sweep(size_t n, double limit, const double *restrict k,
                            double *restrict p, double *restrict m,
                            double *restrict highest, double *restrict lowest);
 
+enum { KENT_BLOCK = 64 }; /* nodes, but for a last one that may have less */
+
+typedef struct kent_floor { /* m */
+    double p, m;
+} kent_floor;
+
+/* The same for n nodes that are whole blocks from the first on; p[-1] and m[n] are
+ * there to be read. low[block] is set to 1 where its floor was crossed, else left. */
+typedef int64_t kent_watching_sweep(size_t n, double limit, const double *restrict k,
+                                    double *restrict p, double *restrict m,
+                                    double *restrict highest, double *restrict lowest,
+                                    const kent_floor *restrict floors,
+                                    uint8_t *restrict low);
+
 typedef struct kent_kernel {
     const char *name;
     kent_sweep *explicit_sweep, *implicit_sweep;
+    kent_watching_sweep *explicit_watch, *implicit_watch;
     kent_fade_pass *recall, *yield; /* of one span: friction, wall */
 } kent_kernel;
 
@@ -47,24 +66,57 @@ typedef struct kent_kernel {
 kent_status kent_kernel_pick(const char *wanted, const kent_kernel **out,
                              kent_error *err);
 
-/* One body for every instruction set: each caller compiles it for its own. */
+/* One body for every instruction set: each caller compiles it for its own. floor NULL:
+ * nothing is watched. Returns the number of nodes within the limit; in *below, of those
+ * below the floor. */
 static inline __attribute__((always_inline)) int64_t
 kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
                  double *restrict p, double *restrict m, double *restrict highest,
-                 double *restrict lowest)
+                 double *restrict lowest, const kent_floor *floor, int64_t *below)
 {
-    int64_t within = 0;
+    const double floor_p = floor ? floor->p : 0.0, floor_m = floor ? floor->m : 0.0;
+    int64_t within = 0, under = 0;
     for (size_t i = 0; i < n; i++) {
         const double twice_head = p[i] + m[i];
         const double d = p[i] - m[i];
         const double kd = k[i] * fabs(d);
         const double drag = implicit ? kd * d / (1.0 + 2.0 * kd) : kd * d;
         const double f = kd <= limit ? drag : 0.0;
+        const double right = p[i] - f, left = m[i] + f;
         within += kd <= limit ? 1 : 0; /* NaN is not */
         highest[i] = twice_head > highest[i] ? twice_head : highest[i];
         lowest[i] = twice_head < lowest[i] ? twice_head : lowest[i];
-        p[i] -= f;
-        m[i] += f;
+        p[i] = right;
+        m[i] = left;
+        if (floor) under += (right < floor_p) | (left < floor_m);
+    }
+    if (floor) *below = under;
+    return within;
+}
+
+/* Block by block. What a block receives over its edges it must watch as well. */
+static inline __attribute__((always_inline)) int64_t
+kent_kernel_blocks(size_t n, double limit, int implicit, const double *restrict k,
+                   double *restrict p, double *restrict m, double *restrict highest,
+                   double *restrict lowest, const kent_floor *restrict floors,
+                   uint8_t *restrict low)
+{
+    int64_t within = 0;
+    for (size_t i = 0, block = 0; i < n; i += KENT_BLOCK, block++) {
+        const size_t count = n - i < KENT_BLOCK ? n - i : KENT_BLOCK;
+        const kent_floor floor = floors[block];
+        int64_t below = 0;
+        within += count == KENT_BLOCK /* a constant makes whole vectors of it */
+                      ? kent_kernel_body(KENT_BLOCK, limit, implicit, k + i, p + i,
+                                         m + i, highest + i, lowest + i, &floor, &below)
+                      : kent_kernel_body(count, limit, implicit, k + i, p + i, m + i,
+                                         highest + i, lowest + i, &floor, &below);
+        low[block] |= (below != 0) | (p[(ptrdiff_t)i - 1] < floor.p);
+        if (block > 0) low[block - 1] |= m[i] < floors[block - 1].m;
+    }
+    if (n > 0) {
+        const size_t last = (n - 1) / KENT_BLOCK;
+        low[last] |= m[n] < floors[last].m;
     }
     return (int64_t)n - within;
 }

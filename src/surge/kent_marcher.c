@@ -1,5 +1,6 @@
 #include "kent_marcher.h"
 
+#include "kent_cavities_internal.h"
 #include "kent_drag_internal.h"
 #include "kent_recall_internal.h"
 #include "kent_stands_internal.h"
@@ -10,6 +11,8 @@
 enum { BLOCK_MOST = 1024 };
 /* m: two places closer than this are one. */
 static const double SAME_PLACE = 1e-6;
+/* m: a cavity's head is the limit itself, but for rounding. */
+static const double SAME_HEAD = 1e-6;
 
 typedef struct kent_eye { /* a watch, made ready */
     size_t node;
@@ -24,6 +27,7 @@ struct kent_marcher {
     kent_drag *drag;
     kent_recall *recall; /* NULL: nothing remembers */
     kent_ends *ends;
+    kent_cavities *cavities; /* NULL: the water never parts */
     kent_schedule *schedule;
     double step;    /* s */
     size_t instant; /* steps from t = 0 to what the waves hold */
@@ -105,6 +109,7 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
                              const kent_watch *watches, size_t watch_count,
                              size_t block, kent_marcher **out, kent_error *err)
 {
+    const bool parts = m->solver.column_separation != KENT_SEPARATION_NONE;
     kent_status status = KENT_E_INPUT;
     kent_marcher *k = kent_alloc(1, sizeof *k);
 
@@ -137,6 +142,11 @@ kent_status kent_marcher_new(const kent_model *m, const kent_steady *s,
     if (status == KENT_OK) status = make_trace(k, watches, watch_count, block, err);
     if (status != KENT_OK) goto done;
     start_waves(k, s);
+    if (parts) {
+        status = kent_cavities_new(m, k->step, KENT_CAVITY_HEIGHTS, k->waves, k->ends,
+                                   &k->cavities, err);
+        if (status != KENT_OK) goto done;
+    }
     *out = k;
     k = NULL;
 done:
@@ -151,6 +161,7 @@ void kent_marcher_free(kent_marcher *k)
     kent_drag_free(k->drag);
     kent_recall_free(k->recall);
     kent_ends_free(k->ends);
+    kent_cavities_free(k->cavities);
     kent_schedule_free(k->schedule);
     free(k->eyes);
     free(k->time);
@@ -204,22 +215,64 @@ found:;
         ceil(reaches * worst / KENT_EXPLICIT_LIMIT));
 }
 
+/* Walls take water in after the sweep: by the heads of cavities, where there are any,
+ * and unseen by it. */
+static void yield(kent_marcher *k)
+{
+    if (!k->recall || k->recall->wall_count == 0) return;
+    if (k->cavities) kent_cavities_show(k->cavities, k->waves);
+    kent_recall_yield(k->recall, k->kernel, k->waves);
+    if (k->cavities) kent_cavities_hide(k->cavities, k->waves);
+}
+
 /* From one instant to the next. */
 static bool advance_once(kent_marcher *k)
 {
     kent_recall_pull(k->recall, k->kernel, k->waves);
     kent_drag_refresh(k->drag, k->waves);
-    if (kent_waves_sweep(k->waves, k->kernel) != 0) {
+    int64_t beyond = k->cavities ? kent_cavities_sweep(k->cavities, k->waves) : 0;
+    beyond += kent_waves_sweep(k->waves, k->kernel);
+    if (beyond != 0) {
         stop(k); /* which finds the culprits where they are */
         return false;
     }
-    kent_recall_yield(k->recall, k->kernel, k->waves);
+    yield(k);
     kent_waves_move(k->waves);
     k->instant++;
     kent_ends_move(k->ends, k->schedule, now(k), k->step);
     kent_ends_solve(k->ends, k->waves);
+    if (k->cavities) kent_cavities_solve(k->cavities, k->waves, now(k));
     k->stopped = k->ends->stands->stopped;
     return k->stopped.status == KENT_OK;
+}
+
+static double head_at(const kent_marcher *k, size_t node)
+{
+    return k->cavities ? kent_cavities_head(k->cavities, k->waves, node)
+                       : kent_waves_head(k->waves, node);
+}
+
+/* 2 B Q at a node: before it (-1), after it (+1), or the mean of both (0). */
+static double gap_at(const kent_marcher *k, size_t node, int side)
+{
+    const double p = k->waves->p[node], m = k->waves->m[node];
+    if (side == 0) return p - m;
+    return side < 0 ? 2.0 * (p - head_at(k, node)) : 2.0 * (head_at(k, node) - m);
+}
+
+/* The same as record() does, where some block is awake. */
+static void record_awake(const kent_marcher *k, double *head, double *flow)
+{
+    for (size_t i = 0; i < k->eye_count; i++) {
+        const kent_eye *eye = &k->eyes[i];
+        double gap = gap_at(k, eye->node, eye->share > 0.0 ? 1 : 0);
+        head[i] = head_at(k, eye->node);
+        if (eye->share > 0.0) {
+            head[i] += eye->share * (head_at(k, eye->node + 1) - head[i]);
+            gap += eye->share * (gap_at(k, eye->node + 1, -1) - gap);
+        }
+        flow[i] = gap * eye->flow_per_gap;
+    }
 }
 
 static void record(kent_marcher *k, size_t row)
@@ -227,6 +280,10 @@ static void record(kent_marcher *k, size_t row)
     const double *p = k->waves->p, *m = k->waves->m;
     double *head = k->head + row * k->eye_count, *flow = k->flow + row * k->eye_count;
     k->time[row] = now(k);
+    if (k->cavities && k->cavities->awake_blocks > 0) {
+        record_awake(k, head, flow);
+        return;
+    }
     for (size_t i = 0; i < k->eye_count; i++) {
         const kent_eye *eye = &k->eyes[i];
         double sum = p[eye->node] + m[eye->node];
@@ -264,9 +321,9 @@ size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,
 
 /* ---- what became of it ----------------------------------------------------------- */
 
-static double lowest_head(const kent_waves *w, size_t node)
+static double lowest_head(const kent_marcher *k, size_t node)
 {
-    return fmin(0.5 * w->twice_lowest[node], kent_waves_head(w, node));
+    return fmin(0.5 * k->waves->twice_lowest[node], head_at(k, node));
 }
 
 void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,
@@ -275,8 +332,8 @@ void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,
     const kent_waves *w = k->waves;
     for (size_t i = 0; i <= w->reaches[span]; i++) {
         const size_t node = w->first[span] + i; /* the present was not swept yet */
-        highest[i] = fmax(0.5 * w->twice_highest[node], kent_waves_head(w, node));
-        lowest[i] = lowest_head(w, node);
+        highest[i] = fmax(0.5 * w->twice_highest[node], head_at(k, node));
+        lowest[i] = lowest_head(k, node);
     }
 }
 
@@ -285,7 +342,7 @@ void kent_marcher_profile(const kent_marcher *k, int span, double *head, double 
     const kent_waves *w = k->waves;
     for (size_t i = 0; i <= w->reaches[span]; i++) {
         const size_t node = w->first[span] + i;
-        head[i] = kent_waves_head(w, node);
+        head[i] = head_at(k, node);
         flow[i] = kent_waves_flow(w, (size_t)span, node);
     }
 }
@@ -293,6 +350,25 @@ void kent_marcher_profile(const kent_marcher *k, int span, double *head, double 
 const char *kent_marcher_caution(const kent_marcher *k, size_t device)
 {
     return kent_stands_caution(k->ends->stands, device);
+}
+
+void kent_marcher_hollow(const kent_marcher *k, int span, double *volume)
+{
+    const size_t reaches = k->waves->reaches[span], first = k->waves->first[span];
+    for (size_t i = 0; i <= reaches; i++) {
+        volume[i] =
+            k->cavities ? kent_cavities_volume(k->cavities, k->waves, first + i) : 0.0;
+    }
+    if (!k->cavities) return;
+    for (int side = 0; side < 2; side++) {
+        const int node = k->model->spans[span].node[side];
+        volume[side == 0 ? 0 : reaches] = kent_cavities_at_node(k->cavities, node);
+    }
+}
+
+size_t kent_marcher_cavities(const kent_marcher *k, kent_cavity *out, size_t most)
+{
+    return k->cavities ? kent_cavities_list(k->cavities, out, most) : 0;
 }
 
 /* The points of a span's route on either side of a chainage (m), or the one at it. */
@@ -322,7 +398,7 @@ size_t kent_marcher_below_vapour(const kent_marcher *k, bool *touched)
             const double limit =
                 kent_vapour_head(&m->water, kent_span_level(m, span, chainage),
                                  m->barometric, m->gravity);
-            if (lowest_head(w, w->first[s] + i) >= limit) continue;
+            if (lowest_head(k, w->first[s] + i) >= limit - SAME_HEAD) continue;
             count++;
             touch(m, span, chainage, touched);
         }

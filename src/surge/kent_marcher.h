@@ -11,7 +11,9 @@
 #include "kent_steady.h"
 
 /* A place whose head and flow are wanted at every instant: m from the span's start.
- * Between grid points both are interpolated linearly at the same instant. */
+ * Between grid points both are interpolated linearly at the same instant. A cavity
+ * parts the flows before and after its grid point: a watch there reads their mean, one
+ * just beside it the flow on its side. */
 typedef struct kent_watch {
     int span;
     double chainage;
@@ -72,8 +74,13 @@ const char *kent_marcher_caution(const kent_marcher *k, size_t device);
 void kent_marcher_envelope(const kent_marcher *k, int span, double *highest,
                            double *lowest);
 
-/* Heads and flows now at every grid point of a span, [reaches + 1] each. For tests. */
+/* Heads and flows (the mean of those before and after) now at every grid point of a
+ * span, [reaches + 1] each. For tests. */
 void kent_marcher_profile(const kent_marcher *k, int span, double *head, double *flow);
+
+/* m3: what is hollow now at every grid point of a span, [reaches + 1]; at its first and
+ * last one that of the whole node. Gas of places that sleep is not counted. */
+void kent_marcher_hollow(const kent_marcher *k, int span, double *volume);
 
 /* A cavity that opened at a grid point or an end. */
 typedef struct kent_cavity {

@@ -140,6 +140,17 @@ static void add_old_kinds(filling *f, kent_cluster *c, const kent_steady *steady
     }
 }
 
+/* Where water may part, the last members of a cluster, in the order of its nodes. */
+static void add_hollows(filling *f, kent_cluster *c)
+{
+    const kent_stands *s = f->stands;
+    if (s->model->solver.column_separation == KENT_SEPARATION_NONE) return;
+    for (size_t i = 0; i < c->node_count; i++) {
+        const int node[2] = {s->nodes[f->node_count - c->node_count + i], -1};
+        (void)add_member(f, c, KENT_MEMBER_HOLLOW, node, 0.0, 0.0);
+    }
+}
+
 static void fill_clusters(kent_stands *s, const kent_steady *steady, const kent_ends *e,
                           int *place)
 {
@@ -149,6 +160,7 @@ static void fill_clusters(kent_stands *s, const kent_steady *steady, const kent_
         add_nodes(&f, c);
         add_devices(&f, c, steady);
         add_old_kinds(&f, c, steady, e);
+        add_hollows(&f, c);
     }
 }
 
@@ -206,9 +218,9 @@ kent_status kent_stands_new(const kent_model *m, const kent_steady *s, int scena
     k->nodes = kent_alloc(nodes, sizeof *k->nodes);
     k->node_store = kent_alloc(nodes, sizeof *k->node_store);
     k->clusters = kent_alloc(nodes, sizeof *k->clusters);
-    k->member_store =
-        kent_alloc(devices + m->fixed_level_count + m->outflow_count + m->valve_count,
-                   sizeof *k->member_store);
+    k->member_store = kent_alloc(devices + m->fixed_level_count + m->outflow_count +
+                                     m->valve_count + nodes,
+                                 sizeof *k->member_store);
     if (!k->states || !k->absent || !k->members || !k->cluster_of || !k->nodes ||
         !k->node_store || !k->clusters || !k->member_store) {
         goto done;

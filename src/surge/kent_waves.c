@@ -55,6 +55,29 @@ static void place_spans(kent_waves *w, const bool *implicit)
     }
 }
 
+static size_t blocks_of(size_t nodes) { return (nodes + KENT_BLOCK - 1) / KENT_BLOCK; }
+
+kent_status kent_waves_watch(kent_waves *w, kent_error *err)
+{
+    w->explicit_blocks = blocks_of(w->explicit_total);
+    w->block_total = w->explicit_blocks + blocks_of(w->node_total - w->explicit_total);
+    w->floors = kent_alloc(w->block_total, sizeof *w->floors);
+    w->low = kent_alloc(w->block_total, sizeof *w->low);
+    w->awake = kent_alloc(w->block_total, sizeof *w->awake);
+    return w->floors && w->low && w->awake ? KENT_OK : kent_error_nomem(err);
+}
+
+size_t kent_waves_block(const kent_waves *w, size_t block, size_t *count)
+{
+    const size_t e = w->explicit_total;
+    const bool explicit = block < w->explicit_blocks;
+    const size_t first =
+        explicit ? block * KENT_BLOCK : e + (block - w->explicit_blocks) * KENT_BLOCK;
+    const size_t left = (explicit ? e : w->node_total) - first;
+    *count = left < KENT_BLOCK ? left : KENT_BLOCK;
+    return first;
+}
+
 kent_status kent_waves_new(const kent_model *m, const kent_grid *grid,
                            const bool *implicit, kent_waves **out, kent_error *err)
 {
@@ -92,6 +115,9 @@ void kent_waves_free(kent_waves *w)
     free(w->first);
     free(w->reaches);
     free(w->impedance);
+    free(w->floors);
+    free(w->low);
+    free(w->awake);
     free(w->pool);
     free(w);
 }
@@ -110,14 +136,48 @@ void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flo
     }
 }
 
+/* The first block from `block` to before `end` that is awake, or is not. */
+static size_t next_block(const kent_waves *w, size_t block, size_t end, int awake)
+{
+    const uint8_t *at =
+        block < end ? memchr(w->awake + block, awake, end - block) : NULL;
+    return at ? (size_t)(at - w->awake) : end;
+}
+
+/* The sleeping blocks from `block` to before `end`, a run at a time. */
+static int64_t sweep_sleepers(kent_waves *w, kent_watching_sweep *sweep, double limit,
+                              size_t block, size_t end)
+{
+    int64_t beyond = 0;
+    while ((block = next_block(w, block, end, 0)) < end) {
+        const size_t from = block;
+        size_t count = 0;
+        block = next_block(w, block, end, 1);
+        const size_t first = kent_waves_block(w, from, &count);
+        const size_t nodes = kent_waves_block(w, block - 1, &count) + count - first;
+        beyond += sweep(nodes, limit, w->k + first, w->p + first, w->m + first,
+                        w->twice_highest + first, w->twice_lowest + first,
+                        w->floors + from, w->low + from);
+    }
+    return beyond;
+}
+
 int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel)
 {
     const size_t e = w->explicit_total;
-    int64_t beyond = kernel->explicit_sweep(e, KENT_EXPLICIT_LIMIT, w->k, w->p, w->m,
-                                            w->twice_highest, w->twice_lowest);
-    beyond +=
-        kernel->implicit_sweep(w->node_total - e, DBL_MAX, w->k + e, w->p + e, w->m + e,
-                               w->twice_highest + e, w->twice_lowest + e);
+    int64_t beyond = 0;
+    if (w->block_total > 0) {
+        beyond += sweep_sleepers(w, kernel->explicit_watch, KENT_EXPLICIT_LIMIT, 0,
+                                 w->explicit_blocks);
+        beyond += sweep_sleepers(w, kernel->implicit_watch, DBL_MAX, w->explicit_blocks,
+                                 w->block_total);
+    } else {
+        beyond += kernel->explicit_sweep(e, KENT_EXPLICIT_LIMIT, w->k, w->p, w->m,
+                                         w->twice_highest, w->twice_lowest);
+        beyond +=
+            kernel->implicit_sweep(w->node_total - e, DBL_MAX, w->k + e, w->p + e,
+                                   w->m + e, w->twice_highest + e, w->twice_lowest + e);
+    }
     return beyond;
 }
 

@@ -22,6 +22,12 @@ typedef struct kent_waves {
     double *p_store, *m_store;            /* [node_total + slack] */
     double *pool;                         /* all of the above: one block of memory */
     size_t slack;
+    /* Where low heads are watched for; else block_total is 0 and the rest NULL. Blocks
+     * of KENT_BLOCK nodes, those of the explicit spans first. */
+    size_t block_total, explicit_blocks;
+    kent_floor *floors; /* [block_total] of sleeping blocks */
+    uint8_t *low;       /* [block_total] 1: a floor was crossed; whoever looks clears */
+    uint8_t *awake;     /* [block_total] 1: swept by kent_cavities, not by the kernel */
 } kent_waves;
 
 /* Largest R|Q|/(2B) of an explicit reach, beyond which friction overshoots (7.9). */
@@ -32,12 +38,25 @@ kent_status kent_waves_new(const kent_model *m, const kent_grid *grid,
                            const bool *implicit, kent_waves **out, kent_error *err);
 void kent_waves_free(kent_waves *w);
 
+/* From now on low heads are watched for, in blocks. Every block sleeps. */
+kent_status kent_waves_watch(kent_waves *w, kent_error *err);
+
 /* A straight grade line between two heads (m) and one flow (m3/s) along a span. */
 void kent_waves_set(kent_waves *w, size_t span, const double head[2], double flow);
 
-/* Friction and envelopes. Returns the number of nodes left untouched because they were
- * beyond the limit (or not a number). */
+/* Friction and envelopes of all nodes but those of blocks that are awake. Returns the
+ * number of nodes left untouched because they were beyond the limit (or not a number).
+ */
 int64_t kent_waves_sweep(kent_waves *w, const kent_kernel *kernel);
+
+/* The nodes of a block, and the block of a node. */
+size_t kent_waves_block(const kent_waves *w, size_t block, size_t *count);
+static inline size_t kent_waves_block_of(const kent_waves *w, size_t node)
+{
+    return node < w->explicit_total
+               ? node / KENT_BLOCK
+               : w->explicit_blocks + (node - w->explicit_total) / KENT_BLOCK;
+}
 
 /* To the next instant: what leaves a node belongs to its neighbours. */
 void kent_waves_move(kent_waves *w);

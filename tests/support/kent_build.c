@@ -78,6 +78,7 @@ kent_build kent_build_new(void)
                             .sound_speed = sqrt(2.2e6)};
     m->barometric = 101325.0;
     m->gravity = 9.80665;
+    m->solver.column_separation = KENT_SEPARATION_NONE;
     m->rules = (kent_rules){.id = "built",
                             .factor_test = (double)NAN,
                             .source = "common practice, no source",

@@ -30,7 +30,8 @@ typedef struct kent_build {
 } kent_build;
 
 /* An empty model: water of 1000 kg/m3, 2.2e9 Pa, 1.0e-6 m2/s at 288.15 K, gravity
- * 9.80665 m/s2, barometric 101325 Pa, one file "built.cfg", no ground stated. Rules
+ * 9.80665 m/s2, barometric 101325 Pa, one file "built.cfg", no ground stated; the water
+ * never parts. Rules
  * (common practice, no source): factor 1.5, height at most half the depth to the base,
  * width 1 .. 2 heights, thickness and height at least 0.3 m, sides in 0.05 m, cover at
  * least 0.6 m, concrete 23 kN/m3, sleeved pipe 0.7, at most 30 m3. */

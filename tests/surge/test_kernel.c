@@ -4,6 +4,7 @@
 
 #include <float.h>
 #include <math.h>
+#include <stdbool.h>
 #include <string.h>
 
 enum { N = 203 }; /* no multiple of any vector */
@@ -75,6 +76,56 @@ static void every_kernel_gives_the_same_bits(void **state)
     }
 }
 
+/* A watching sweep leaves the same numbers, and marks just the blocks that a p or an m
+ * below the floor comes from or goes to. */
+static void a_watching_sweep_marks_what_may_be_low(void **state)
+{
+    (void)state;
+    enum { BLOCKS = (N + KENT_BLOCK - 1) / KENT_BLOCK };
+    static const char *const level[] = {"base", "avx2", "avx512"};
+    for (int i = 0; i < 6; i++) {
+        const bool implicit = i % 2 == 1;
+        const kent_kernel *kernel = pick(level[i / 2]);
+        if (!kernel) continue;
+        nodes want = some_nodes(), got = some_nodes();
+        double p[N + 2] = {1e9}, m[N + 2] = {0.0}; /* room for the neighbours */
+        uint8_t low[BLOCKS] = {0}, mark[BLOCKS] = {0};
+        kent_floor floors[BLOCKS];
+        const int64_t beyond =
+            (implicit ? kernel->implicit_sweep : kernel->explicit_sweep)(
+                N, 0.02, want.k, want.p, want.m, want.highest, want.lowest);
+        memcpy(p + 1, got.p, sizeof got.p);
+        memcpy(m, got.m, sizeof got.m);
+        m[N] = 1e9;
+        for (int b = 0; b < BLOCKS; b++) {
+            floors[b] = (kent_floor){-1e9, -1e9};
+        }
+        floors[1].p = want.p[70] + 1e-9; /* one inside */
+        floors[2].p = want.p[127];       /* one over its edge, but not below */
+        floors[2].m = want.m[192] + 1e-9;
+        for (int b = 0; b < BLOCKS; b++) {
+            for (int n = KENT_BLOCK * b - 1; n <= KENT_BLOCK * (b + 1); n++) {
+                const bool inside = n >= KENT_BLOCK * b && n < KENT_BLOCK * (b + 1);
+                if (n < 0 || n >= N) continue;
+                if ((inside || n < KENT_BLOCK * b) && want.p[n] < floors[b].p)
+                    mark[b] = 1;
+                if ((inside || n > KENT_BLOCK * b) && want.m[n] < floors[b].m)
+                    mark[b] = 1;
+            }
+        }
+        assert_true(
+            beyond ==
+            (implicit ? kernel->implicit_watch : kernel->explicit_watch)(
+                N, 0.02, got.k, p + 1, m, got.highest, got.lowest, floors, low));
+        assert_memory_equal(low, mark, sizeof low);
+        assert_true(low[1] == 1 && low[2] == 1 && low[0] == 0);
+        assert_memory_equal(p + 1, want.p, sizeof want.p);
+        assert_memory_equal(m, want.m, sizeof want.m);
+        assert_memory_equal(got.highest, want.highest, sizeof want.highest);
+        assert_memory_equal(got.lowest, want.lowest, sizeof want.lowest);
+    }
+}
+
 static void nodes_beyond_the_limit_are_counted_and_left(void **state)
 {
     (void)state;
@@ -121,6 +172,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_node_loses_r_q_q_to_either_side),
         cmocka_unit_test(every_kernel_gives_the_same_bits),
+        cmocka_unit_test(a_watching_sweep_marks_what_may_be_low),
         cmocka_unit_test(nodes_beyond_the_limit_are_counted_and_left),
         cmocka_unit_test(implicit_friction_never_turns_a_flow_round),
         cmocka_unit_test(unknown_kernels_are_refused),
