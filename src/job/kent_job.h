@@ -40,6 +40,11 @@ typedef struct kent_scenario_result { /* of one march */
     kent_history history;         /* columns: kent_results.history_points */
     size_t below_vapour; /* grid points whose head fell below the vapour limit */
     bool *touched;       /* [point_count] points at or next to one */
+    kent_cavity
+        *cavities; /* [cavity_count] every place where one opened, largest first */
+    size_t cavity_count;
+    double *hollow; /* [point_count] m3: the largest at the point, or at a grid point on
+                       either side of it; 0: none */
 } kent_scenario_result;
 
 typedef struct kent_results {

@@ -1,6 +1,7 @@
 #include "kent_limits.h"
 
 #include "kent_overload.h"
+#include "kent_parting.h"
 #include "kent_said.h"
 
 #include <math.h>
@@ -47,9 +48,14 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
     if (named > NAMED) kent_text_add(&where, " and %zu more", named - NAMED);
     kent_notes_add(
         &r->cautions,
-        "%s: the pressure falls below the vapour limit at or next to %s; this "
-        "version has no cavity model, so pressures after that instant are not to "
-        "be relied on there",
+        m->solver.column_separation == KENT_SEPARATION_NONE
+            ? "%s: the pressure falls below the vapour limit at or next to %s; "
+              "cavities "
+              "are switched off (column_separation), so pressures after that instant "
+              "are not to be relied on there"
+            : "%s: the pressure is below the vapour limit at or next to %s before "
+              "anything happens: no full pipe flows so, and what follows is not to be "
+              "relied on there",
         name_of(m, run).s, kent_text_of(&where));
     kent_text_clear(&where);
     if (m->scenarios[run->scenario].for_comparison) return;
@@ -132,6 +138,7 @@ void kent_limits_judge(kent_results *r)
     if (r->loads) kent_site_test_caution(r->model, &r->loads->test, &r->cautions);
     for (size_t i = 0; i < r->scenario_count; i++) {
         judge_vapour(r, &r->scenarios[i]);
+        kent_parting_judge(r, &r->scenarios[i]);
         judge_devices(r, &r->scenarios[i]);
         judge_lateness(r, &r->scenarios[i]);
         if (i == 0) judge_grid(r, &r->scenarios[i]);

@@ -1,5 +1,7 @@
 #include "kent_scenario_run.h"
 
+#include "kent_parting.h"
+
 #include <stdlib.h>
 
 enum { BLOCK = 64 }; /* instants pulled at once: small enough to stay in cache */
@@ -104,7 +106,7 @@ static kent_status take_envelopes(const kent_scenario_run *run,
         out->devices[i].caution = kent_marcher_caution(march, i);
     }
     out->below_vapour = kent_marcher_below_vapour(march, out->touched);
-    return KENT_OK;
+    return kent_parting_take(m, run->grid, march, out, err);
 }
 
 kent_status kent_scenario_run_march(const kent_scenario_run *run,
@@ -179,6 +181,8 @@ void kent_scenario_result_clear(kent_scenario_result *r, size_t span_count)
     free(r->points);
     free(r->devices);
     free(r->touched);
+    free(r->cavities);
+    free(r->hollow);
     kent_history_clear(&r->history);
     kent_grid_free(r->grid);
     *r = (kent_scenario_result){0};

@@ -6,8 +6,12 @@
 
 #include <jansson.h>
 #include <math.h>
+#include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+
+/* Of one march; the rest is counted. */
+enum { CAVITIES_LISTED = 100 };
 
 static const double DEGREES = 57.29577951308232; /* per radian */
 
@@ -263,7 +267,7 @@ static json_t *scenario_point(const kent_model *m, size_t point,
     set(&o, "lowest_at_s", real(peak->lowest_at));
     set(&o, "highest_pressure_Pa", real(kent_model_pressure(m, peak->highest_head, z)));
     set(&o, "lowest_pressure_Pa", real(kent_model_pressure(m, peak->lowest_head, z)));
-    set(&o, "cavity_m3", json_null());
+    set(&o, "cavity_m3", s->hollow[point] > 0.0 ? real(s->hollow[point]) : json_null());
     set(&o, "below_vapour", json_boolean(s->touched[point]));
     return object_done(o);
 }
@@ -295,6 +299,29 @@ static json_t *scenario_device(const kent_model *m, size_t device,
         set_swing(&o, q[j].name, &of->told[j]);
     }
     set(&o, "caution", of->caution ? words(of->caution) : json_null());
+    return object_done(o);
+}
+
+/* Called after its point, or "A@12.5": the pipe and metres from its start. */
+static json_t *scenario_cavity(const kent_model *m, const kent_cavity *c)
+{
+    kent_object o = object_new();
+    char id[2 * KENT_ID];
+    if (c->node >= 0) {
+        (void)snprintf(id, sizeof id, "%s", m->points[m->nodes[c->node].point].id);
+    } else {
+        (void)snprintf(id, sizeof id, "%s@%.6g", m->spans[c->span].id, c->chainage);
+    }
+    set(&o, "id", words(id));
+    set(&o, "pipe", c->span < 0 ? json_null() : words(m->spans[c->span].id));
+    set(&o, "chainage_m", real(c->chainage));
+    set(&o, "largest_m3", real(c->largest));
+    set(&o, "largest_at_s", real(c->largest_at));
+    set(&o, "opened_s", real(c->opened));
+    set(&o, "first_closed_s", real(c->closed));
+    set(&o, "last_closed_s", real(c->collapsed));
+    set(&o, "times", count_of((size_t)c->count));
+    set(&o, "pulse_m", real(c->pulse));
     return object_done(o);
 }
 
@@ -335,6 +362,12 @@ static void put_scenario(kent_writer *w, const kent_scenario_result *s)
     open_list(w, ",\n\"devices\": [");
     for (size_t i = 0; i < m->device_count; i++) {
         put_element(w, scenario_device(m, i, s));
+    }
+    put_text(w, "],\n\"cavity_places\": ");
+    put_value(w, count_of(s->cavity_count));
+    open_list(w, ",\n\"cavities\": [");
+    for (size_t i = 0; i < s->cavity_count && i < CAVITIES_LISTED; i++) {
+        put_element(w, scenario_cavity(m, &s->cavities[i]));
     }
     put_text(w, "]}");
 }

@@ -25,7 +25,7 @@ static bool follow(kent_pocket *k, double volume, double rise, double listed,
     if (!k->open && volume >= listed) {
         if (k->count == 0) {
             k->opened = time;
-            k->collapsed = k->pulse = (double)NAN;
+            k->closed = k->collapsed = k->pulse = (double)NAN;
         }
         k->count++;
         k->open = true;
@@ -33,6 +33,7 @@ static bool follow(kent_pocket *k, double volume, double rise, double listed,
     } else if (k->open && volume < 0.5 * listed) {
         k->open = false;
         k->rising = true;
+        if (isnan(k->closed)) k->closed = time;
         k->collapsed = time;
         k->peak = rise;
         k->pulse = fmax(k->pulse, rise); /* fmax takes the number */
@@ -634,6 +635,7 @@ static kent_cavity told(const kent_pocket *k, int span, double chainage, int nod
         .largest = k->largest,
         .largest_at = k->largest_at,
         .opened = k->opened,
+        .closed = k->closed,
         .collapsed = k->collapsed,
         .count = k->count,
         .pulse = k->pulse,

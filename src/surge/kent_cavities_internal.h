@@ -34,8 +34,8 @@ extern const double KENT_CAVITY_LISTED;
 
 /* What became of one place. */
 typedef struct kent_pocket {
-    double largest, largest_at, opened, collapsed, pulse; /* as in kent_cavity */
-    double peak;                                          /* m: rise so far */
+    double largest, largest_at, opened, closed, collapsed, pulse; /* as kent_cavity */
+    double peak;                                                  /* m: rise so far */
     int count;
     bool open, rising; /* rising: closed just now, and the head still goes up */
 } kent_pocket;

@@ -90,6 +90,7 @@ typedef struct kent_cavity {
     double largest;    /* m3 */
     double largest_at; /* s */
     double opened;     /* s, first */
+    double closed;     /* s, first time that it collapsed; NAN: not yet */
     double collapsed;  /* s, last; NAN: not yet */
     int count;         /* times that it opened */
     double pulse;      /* m: largest rise of head on a collapse; NAN: none yet */

@@ -121,10 +121,15 @@ static void a_fitting_below_the_vapour_limit_says_so(void **state)
     kent_results *r = run(&b, &(kent_job_options){.threads = 1});
     const int crest = kent_build_fitting_of(&b, "B");
     assert_true(r->limit_exceeded);
-    assert_true(a_caution_holds(&r->cautions, "at or next to"));
+    assert_true(a_caution_holds(&r->cautions, "are switched off"));
     assert_true(r->scenarios[0].touched[1]);
+    assert_int_equal(r->scenarios[0].cavity_count, 0);
     assert_true(
         a_caution_holds(&r->restraints->fittings[crest].cautions, "vapour limit"));
+    kent_results_free(r);
+    b.model->solver.column_separation = KENT_SEPARATION_GAS;
+    r = run(&b, &(kent_job_options){.threads = 1});
+    assert_true(a_caution_holds(&r->cautions, "before anything happens"));
     kent_results_free(r);
     kent_build_clear(&b);
 
@@ -258,6 +263,28 @@ static void a_sheet_of_ports_runs_without_a_network(void **state)
     kent_build_clear(&b);
 }
 
+/* A crest that the fast closure empties: the run says so, the fitting there, and the
+ * fittings whose peak comes of its closing. */
+static void a_fitting_where_the_water_parts_says_so(void **state)
+{
+    (void)state;
+    kent_build b = main_with_two_closures();
+    b.model->points[1].at.z = 60.0;
+    b.model->solver.column_separation = KENT_SEPARATION_GAS;
+    kent_build_derive(&b);
+    kent_results *r = run(&b, &(kent_job_options){.threads = 1});
+    const kent_scenario_result *fast = &r->scenarios[0];
+    const int crest = kent_build_fitting_of(&b, "B");
+    assert_true(fast->cavity_count > 0 && fast->below_vapour == 0);
+    assert_true(fast->hollow[1] > 0.0 && fast->hollow[1] <= fast->cavities[0].largest);
+    assert_true(r->limit_exceeded);
+    assert_true(a_caution_holds(&r->cautions, "the water parts at or next to"));
+    assert_true(a_caution_holds(&r->restraints->fittings[crest].cautions,
+                                "the water parts at or next to it"));
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -266,6 +293,7 @@ int main(void)
         cmocka_unit_test(
             a_faster_closure_gives_the_higher_peak_and_both_stay_below_joukowsky),
         cmocka_unit_test(a_fitting_below_the_vapour_limit_says_so),
+        cmocka_unit_test(a_fitting_where_the_water_parts_says_so),
         cmocka_unit_test(a_rating_that_is_passed_is_said_and_sets_the_limit),
         cmocka_unit_test(a_rating_is_held_against_water_at_rest_too),
         cmocka_unit_test(a_peak_at_the_very_end_asks_for_a_longer_run),

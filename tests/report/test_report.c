@@ -222,6 +222,8 @@ static const char *const KEYS[] = {
     "scenarios[].points[].highest_pressure_Pa",
     "scenarios[].points[].lowest_pressure_Pa",
     "scenarios[].points[].cavity_m3",
+    "scenarios[].cavity_places",
+    "scenarios[].cavities",
     "fittings[].id",
     "fittings[].at",
     "fittings[].pipe",
