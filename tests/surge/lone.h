@@ -24,7 +24,8 @@ typedef struct lone_line {
 } lone_line;
 
 /* Water of 1000 kg/m3, g = 9.81 m/s2, barometric 101 325 Pa, a point P at level z, in a
- * main of 100 m of 0.5 m, so that a scenario can be added to l->build before lone_start. */
+ * main of 100 m of 0.5 m, so that a scenario can be added to l->build before
+ * lone_start. */
 void lone_new(lone *l, const kent_device_ops *ops, double z);
 /* From its steady state: head[1] only in line. Device 0 of its kind in l->model. */
 void lone_start(lone *l, double flow, double head0, double head1, double step);
