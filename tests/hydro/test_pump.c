@@ -214,7 +214,8 @@ static void two_points_make_a_parabola(void **state)
                          .stages = 1,
                          .suctions = 1};
     assert_null(kent_pump_curve_complete(&c, DENSITY, GRAVITY));
-    for (double q = 0.0; q <= 0.3; q += 0.01) {
+    for (int k_q = 0; k_q < 31; k_q++) {
+        const double q = 0.01 * k_q;
         assert_close(kent_pump_at(&c, q, 150.0).head, 60.0 - 200.0 * q * q, 1e-13);
     }
 }
@@ -225,7 +226,8 @@ static void the_laws_of_affinity_hold_everywhere(void **state)
     (void)state;
     const double factors[] = {0.05, 0.4, 1.7, 30.0};
     const kent_pump_curve c = pump_of(90.0, true);
-    for (double x = 0.005; x < 2.0 * PI; x += 0.01) {
+    for (int k_x = 0; k_x < 628; k_x++) {
+        const double x = 0.005 + 0.01 * k_x;
         const double v = sin(x - PI), alpha = cos(x - PI);
         const kent_pump_point one = at_shares(&c, v, alpha);
         for (size_t i = 0; i < 4; i++) {
@@ -245,7 +247,8 @@ static void head_never_rises_with_flow_while_it_pumps(void **state)
     (void)state;
     for (size_t s = 0; s < SPEED_COUNT; s++) {
         const kent_pump_curve c = pump_of(SPEEDS[s], true);
-        for (double v = 0.0; v < 2.0; v += 0.001) {
+        for (int k_v = 0; k_v < 2000; k_v++) {
+            const double v = 0.001 * k_v;
             assert_true(at_shares(&c, v, 1.0).head_by_flow <= 0.0);
         }
     }
@@ -256,7 +259,8 @@ static void head_never_rises_with_flow_while_it_pumps(void **state)
 static void assert_joined(const kent_pump_curve *c, double x)
 {
     const double step = 1e-12;
-    for (double size = 0.1; size < 3.0; size *= 2.0) {
+    for (int k_size = 0; k_size < 5; k_size++) {
+        const double size = 0.1 * pow(2.0, k_size);
         const double before = x - step - PI, after = x + step - PI;
         const kent_pump_point a = at_shares(c, size * sin(before), size * cos(before));
         const kent_pump_point b = at_shares(c, size * sin(after), size * cos(after));
@@ -278,7 +282,8 @@ static void assert_joined(const kent_pump_curve *c, double x)
 static void own_curve_and_table_join_without_a_jump(void **state)
 {
     (void)state;
-    for (double ns = 15.0; ns < 290.0; ns += 7.3) {
+    for (int k_ns = 0; k_ns < 38; k_ns++) {
+        const double ns = 15.0 + 7.3 * k_ns;
         for (int own = 0; own < 2; own++) {
             const kent_pump_curve c = pump_of(ns, own == 1);
             assert_joined(&c, PI);
@@ -296,10 +301,12 @@ static void own_curve_and_table_join_without_a_jump(void **state)
 static void a_breath_of_reverse_flow_changes_nothing(void **state)
 {
     (void)state;
-    for (double ns = 15.0; ns < 290.0; ns += 7.3) {
+    for (int k_ns = 0; k_ns < 38; k_ns++) {
+        const double ns = 15.0 + 7.3 * k_ns;
         const kent_pump_curve c = pump_of(ns, true);
         const kent_pump_point none = kent_pump_at(&c, 0.0, c.rated_speed);
-        for (double q = 1e-30; q < 1e-14; q *= 10.0) {
+        for (int k_q = 0; k_q < 16; k_q++) {
+            const double q = 1e-30 * pow(10.0, k_q);
             const kent_pump_point back =
                 kent_pump_at(&c, -q * c.rated_flow, c.rated_speed);
             assert_within(back.head, none.head, 1e-9 * c.rated_head);
@@ -320,8 +327,10 @@ static void it_never_gives_more_than_it_gets(void **state)
                                 {90.0, 72.0, 50.0, 37.0, 22.0},
                                 {75.0, 65.0, 50.0, 40.0, 27.0}};
     for (int shape = 0; shape < 8; shape++) {
-        for (double e = 0.65; e < 0.925; e += 0.09) {
-            for (double ns = 15.0; ns < 300.0; ns += 20.0) {
+        for (int k_e = 0; k_e < 4; k_e++) {
+            const double e = 0.65 + 0.09 * k_e;
+            for (int k_ns = 0; k_ns < 15; k_ns++) {
+                const double ns = 15.0 + 20.0 * k_ns;
                 kent_pump_curve c = pump_of(ns, shape % 2 == 1);
                 c.rated_efficiency = e;
                 for (size_t i = 0; i < 5; i++) {
@@ -329,7 +338,8 @@ static void it_never_gives_more_than_it_gets(void **state)
                     c.efficiency[i] *= e / 0.84;
                 }
                 assert_null(kent_pump_curve_complete(&c, DENSITY, GRAVITY));
-                for (double x = 0.0; x < 2.0 * PI; x += 0.005) {
+                for (int k_x = 0; k_x < 1257; k_x++) {
+                    const double x = 0.005 * k_x;
                     const double flow = c.rated_flow * sin(x - PI);
                     const double speed = c.rated_speed * cos(x - PI);
                     const kent_pump_point p = kent_pump_at(&c, flow, speed);
@@ -359,8 +369,10 @@ static void derivatives_are_those_of_differences(void **state)
     for (size_t s = 0; s < SPEED_COUNT; s++) {
         const kent_pump_curve c = pump_of(SPEEDS[s], s % 2 == 0);
         const double q = step * c.rated_flow, w = step * c.rated_speed;
-        for (double x = 0.003; x < 2.0 * PI; x += 0.0171) {
-            for (double size = 0.2; size < 3.0; size *= 3.0) {
+        for (int k_x = 0; k_x < 368; k_x++) {
+            const double x = 0.003 + 0.0171 * k_x;
+            for (int k_size = 0; k_size < 3; k_size++) {
+                const double size = 0.2 * pow(3.0, k_size);
                 const double flow = size * sin(x - PI) * c.rated_flow;
                 const double speed = size * cos(x - PI) * c.rated_speed;
                 const kent_pump_point p = kent_pump_at(&c, flow, speed);

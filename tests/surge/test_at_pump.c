@@ -464,7 +464,8 @@ static void power_restored_onto_a_turning_pump(void **state)
 static void assert_law_is_sound(const rig *r, bool rises)
 {
     const double step = 1e-7;
-    for (double q = -0.9; q < 1.2; q += 0.0137) {
+    for (int k_q = 0; k_q < 154; k_q++) {
+        const double q = -0.9 + 0.0137 * k_q;
         const kent_device_law a = rig_law(r, q - step), b = rig_law(r, q + step);
         const kent_device_law l = rig_law(r, q);
         const double slope = (b.f - a.f) / (2.0 * step);

@@ -131,7 +131,8 @@ static void its_law_rises_and_has_its_own_slope(void **state)
         valve(&r, 1.0, delayed ? 0.5 : 0.0);
         start(&r, 0.05, 0.01, 0);
         for (size_t i = 0; i < 4; i++) {
-            for (double q = -0.2; q < 0.2; q += 0.00137) {
+            for (int k_q = 0; k_q < 292; k_q++) {
+                const double q = -0.2 + 0.00137 * k_q;
                 const double head[2] = {20.0 + heads[i], 20.0};
                 const kent_device_law l = r.ops->law(&r.state, q, head);
                 const double a = r.ops->law(&r.state, q - step, head).f;
