@@ -52,7 +52,8 @@ static const char *const LATER[] = {"as-built",    "standard-table", "draw",
                                     "from-survey", "serve"};
 enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 
-static const char *const PARTS[] = {"pipes", "soils", "valves", "rules", "materials"};
+static const char *const PARTS[] = {"pipes", "soils",     "valves",
+                                    "rules", "materials", "pumps"};
 enum { PART_COUNT = sizeof PARTS / sizeof PARTS[0] };
 
 static const char ARGUMENTS[] =
@@ -61,7 +62,7 @@ static const char ARGUMENTS[] =
     "check --keys\n"
     "explain CASE [FITTING...]\n"
     "cross-check CASE\n"
-    "catalogue [pipes|materials|valves|soils|rules [WORD...]]";
+    "catalogue [pipes|materials|valves|pumps|soils|rules [WORD...]]";
 
 static const char DOCUMENT[] =
     "Restraint of buried pressure mains: thrust blocks and restrained lengths, from "
@@ -246,9 +247,6 @@ static void finish(struct argp_state *state, reading *r)
         r->options->words[r->options->word_count++] = r->words[i];
     }
     if (c->command != KENT_CATALOGUE_LIST || after == 0) return;
-    if (strcmp(r->words[1], "pumps") == 0) {
-        argp_error(state, "'catalogue pumps' is not in this version");
-    }
     r->options->subject =
         PARTS[choose(state, "a part of the catalogue", r->words[1], PARTS, PART_COUNT)];
 }

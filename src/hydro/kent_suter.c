@@ -6,6 +6,11 @@
  * and P. Suter, The calculation of waterhammer problems by means of the digital
  * computer, International Symposium on Water Hammer in Pumped Storage Projects, ASME,
  * Chicago, 1965. */
+const char KENT_SUTER_SOURCE[] =
+    "Wylie and Streeter, Fluid Transients in Systems, 1993, appendix; Chaudhry, "
+    "Applied "
+    "Hydraulic Transients, 1987, appendix E; measured: Marchal, Flesch, Suter, 1965";
+
 const kent_suter KENT_SUTER[KENT_SUTER_CURVES] = {
     {.specific_speed = 25.0,
      .wh = {0.634,  0.643,  0.646,  0.640,  0.629,  0.613,  0.595,  0.575,  0.552,

@@ -14,6 +14,9 @@ typedef struct kent_suter {
     double wb[KENT_SUTER_POINTS]; /* torque, likewise */
 } kent_suter;
 
+/* Where the numbers come from, and that they are from memory. */
+extern const char KENT_SUTER_SOURCE[];
+
 extern const kent_suter KENT_SUTER[KENT_SUTER_CURVES]; /* specific speed rising */
 
 #endif

@@ -51,8 +51,8 @@ kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinion
                               const kent_report_options *o, kent_sink sink);
 
 /* Which rows of the catalogue: part is NULL for all or "pipes", "soils", "valves",
- * "rules", "materials"; every word must occur, in any case of letters, in a row's id,
- * material, standard, source or status. */
+ * "rules", "materials", "pumps"; every word must occur, in any case of letters, in a
+ * row's id, material, standard, source or status. */
 typedef struct kent_choice {
     const char *part;
     const char *const *words; /* [word_count] */

@@ -1,5 +1,6 @@
 #include "kent_shown.h"
 #include "kent_sink.h"
+#include "kent_suter.h"
 #include "kent_table.h"
 
 #include <math.h>
@@ -228,6 +229,55 @@ static void list_valves(const kent_listing *l)
     finish(l, "Valves: capacity E against opening, relative to full opening", &t);
 }
 
+/* Of a whole number of eighths of a turn: head and torque over their rated values. */
+static void suter(kent_table *t, const kent_suter *s, size_t eighth)
+{
+    const size_t i = eighth * (KENT_SUTER_POINTS - 1) / 8;
+    number(t, s->wh[i], 3);
+    number(t, s->wb[i], 3);
+}
+
+/* Each by where it is easy to picture: one of flow and speed is nil, the other rated.
+ */
+static void list_pumps(const kent_listing *l)
+{
+    const kent_column columns[] = {
+        {"characteristic", "", KENT_ALIGN_LEFT, false},
+        {"specific speed", "rpm, m3/s, m", KENT_ALIGN_RIGHT, false},
+        {"no flow", "head", KENT_ALIGN_RIGHT, false},
+        {"", "torque", KENT_ALIGN_RIGHT, false},
+        {"still", "head", KENT_ALIGN_RIGHT, false},
+        {"", "torque", KENT_ALIGN_RIGHT, false},
+        {"flow back", "head", KENT_ALIGN_RIGHT, false},
+        {"", "torque", KENT_ALIGN_RIGHT, false},
+        {"status", "", KENT_ALIGN_LEFT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    enum { BACK = 2, NO_FLOW = 4, ONWARDS = 6 }; /* eighths of a turn */
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < KENT_SUTER_CURVES; i++) {
+        const kent_suter *s = &KENT_SUTER[i];
+        kent_provenance from = {.status = "memory"};
+        char id[32];
+        (void)snprintf(id, sizeof id, "Suter-%.0f", s->specific_speed);
+        (void)snprintf(from.source, sizeof from.source, "%s", KENT_SUTER_SOURCE);
+        if (!wanted(l, id, "", "", from.source, from.status)) continue;
+        kent_table_cell(&t, "%s", id);
+        number(&t, s->specific_speed, 0);
+        suter(&t, s, NO_FLOW);
+        suter(&t, s, ONWARDS);
+        suter(&t, s, BACK);
+        origin(l, &t, &from);
+    }
+    finish(
+        l,
+        "Pumps: complete characteristics (Suter), for what a pump's own curve does not "
+        "say: head\nand torque over the rated ones, at rated speed without flow, and "
+        "standing still with the\nrated flow onwards and back",
+        &t);
+}
+
 /* How the bearing is known: "191.5", "48.0 at 0.75 to 97.0 at 1.50 m", "23.6 per m",
  * "0.50 of the passive". */
 static void bearing(const kent_listing *l, kent_table *t, const kent_soil *s)
@@ -347,11 +397,9 @@ kent_status kent_report_catalogue(const kent_catalogue *c, const kent_choice *ch
     static const struct {
         const char *word;
         void (*list)(const kent_listing *l);
-    } PARTS[] = {{"pipes", list_pipes},
-                 {"materials", list_materials},
-                 {"valves", list_valves},
-                 {"soils", list_soils},
-                 {"rules", list_rules}};
+    } PARTS[] = {{"pipes", list_pipes},   {"materials", list_materials},
+                 {"valves", list_valves}, {"pumps", list_pumps},
+                 {"soils", list_soils},   {"rules", list_rules}};
     kent_text out = {0};
     kent_notes sources = {0};
     const kent_listing l = {.catalogue = c,

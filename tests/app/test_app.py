@@ -74,8 +74,7 @@ class App(unittest.TestCase):
                 (["run", "main.cfg", "--out", "x", "--no-files"], "exclude"),
                 (["check", "main.cfg", "--strict"], "--strict"),
                 (["catalogue", "pips"], "pipes"),
-                (["draw", "main.cfg", "plan"], "not in this version"),
-                (["catalogue", "pumps"], "not in this version")]:
+                (["draw", "main.cfg", "plan"], "not in this version")]:
             with self.subTest(args=args):
                 r = self.call(*args)
                 self.assertEqual(r.returncode, 2)

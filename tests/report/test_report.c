@@ -666,7 +666,8 @@ static void the_catalogue_lists_each_row_with_its_source(void **state)
         assert_int_equal(
             kent_report_catalogue(c, &all, &o, kent_mixed_sink(&out), &rows), KENT_OK);
         assert_int_equal(rows, c->pipe_count + c->material_count + c->valve_count +
-                                   c->soil_count + c->rule_count);
+                                   c->soil_count + c->rule_count +
+                                   3); /* characteristics of pumps */
         const char *text = kent_text_of(&out);
         assert_narrow(text);
         for (size_t i = 0; i < c->pipe_count; i++) {
@@ -710,6 +711,8 @@ static void words_choose_rows_of_the_catalogue(void **state)
                 {"valves", {"weisbach"}, 1, 3, "gate-circular"},
                 {"rules", {"test"}, 1, 1, "under test 1.13"},
                 {"rules", {"2280"}, 1, 1, "1.10 on bearings of the soils AS2280 alone"},
+                {"pumps", {NULL}, 0, 3, "1.288"}, /* head of Suter-25, no flow */
+                {"pumps", {"suter-147"}, 1, 1, "Chaudhry"},
                 {"materials", {"plastic"}, 1, 0, ""},
                 {NULL, {"derived"}, 1, 90 + 3 + 1, "Renton"}};
     kent_catalogue *c = NULL;
