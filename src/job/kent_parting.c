@@ -143,25 +143,23 @@ static double first_closing(const kent_scenario_result *run)
     return first;
 }
 
-/* The instant that governs a fitting by this march, if it does; else NAN. */
-static double governing_time(const kent_results *r, const kent_scenario_result *run,
-                             size_t fitting, const kent_load_case **of)
+/* The load case that governs a fitting, where it is of this march; else NULL. */
+static const kent_load_case *
+governing_case(const kent_results *r, const kent_scenario_result *run, size_t fitting)
 {
     const int governing = r->restraints->fittings[fitting].governing;
-    if (governing < 0) return NAN;
+    if (governing < 0) return NULL;
     const kent_load_case *c = &r->loads->fittings[fitting].cases[governing];
-    *of = c;
-    if (c->scenario != run->scenario || c->state != run->state) return NAN;
-    return c->worst[KENT_RESULTANT].time;
+    return c->scenario == run->scenario && c->state == run->state ? c : NULL;
 }
 
 static void caution_pulse(kent_results *r, const kent_scenario_result *run)
 {
     const double first = first_closing(run);
     for (size_t i = 0; r->restraints && r->loads && i < r->model->fitting_count; i++) {
-        const kent_load_case *c = NULL;
-        const double time = governing_time(r, run, i, &c);
-        if (!(time >= first)) continue; /* NAN: something else governs */
+        const kent_load_case *c = governing_case(r, run, i);
+        const double time = c ? c->worst[KENT_RESULTANT].time : NAN;
+        if (!c || !(time >= first)) continue;
         kent_notes *cautions = &r->restraints->fittings[i].cautions;
         kent_notes_add(
             cautions,

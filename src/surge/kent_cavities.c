@@ -266,8 +266,8 @@ static void solve_knots(kent_cavities *c, kent_waves *w, double time)
     for (size_t r = 0; r < c->ends->run_count; r++) {
         const kent_run *run = &c->ends->runs[r];
         const size_t group = run->kind == KENT_END_VALVE ? 2 : 1;
-        if (run->kind == KENT_END_FIXED_LEVEL || run->kind == KENT_END_CLUSTER)
-            continue;
+        const bool never = run->kind == KENT_END_FIXED_LEVEL;
+        if (never || run->kind == KENT_END_CLUSTER) continue;
         for (size_t i = run->first; i < run->first + run->count; i += group) {
             if (!wake_together(c, w, i, group)) continue;
             const double taken = taken_at(c, w, run->kind, i);

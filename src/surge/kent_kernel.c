@@ -4,7 +4,8 @@
 
 /* target bodies and a pointer rather than target_clones: the latter crashes under
  * gcc's ThreadSanitizer and binds wrongly with clang 14. */
-/* NOLINTBEGIN(bugprone-macro-parentheses): an attribute stands bare */
+/* NOLINTBEGIN(bugprone-macro-parentheses,readability-function-size): an attribute
+ * stands bare; arrays that restrict must name */
 #define KENT_KERNEL(level, attribute)                                                  \
     attribute static int64_t explicit_##level(                                         \
         size_t n, double limit, const double *restrict k, double *restrict p,          \
@@ -44,13 +45,13 @@
     {                                                                                  \
         kent_fade_yield(f, p, m);                                                      \
     }
-/* NOLINTEND(bugprone-macro-parentheses) */
 
 KENT_KERNEL(base, )
 #ifdef __x86_64__
 KENT_KERNEL(avx2, __attribute__((target("avx2"))))
 KENT_KERNEL(avx512, __attribute__((target("avx512f"))))
 #endif
+/* NOLINTEND(bugprone-macro-parentheses,readability-function-size) */
 
 /* Best last. */
 static const kent_kernel KERNELS[] = {

@@ -37,7 +37,8 @@ static double time_engine(const kent_model *m, const kent_steady *s, const kent_
     (void)kent_marcher_advance(k, 1, &trace, &err);
     const double start = seconds();
     for (int done = 0; done < STEPS; done += BLOCK) {
-        assert_int_equal(kent_marcher_advance(k, BLOCK, &trace, &err), BLOCK);
+        if (kent_marcher_advance(k, BLOCK, &trace, &err) != BLOCK)
+            fail_msg("%s", err.what);
     }
     const double took = seconds() - start;
     kent_marcher_free(k);
@@ -158,9 +159,61 @@ static void remember(void **state)
     kent_build_clear(&b);
 }
 
+/* What cavities cost: while all sleep, and where the vapour limit is raised towards the
+ * heads of the network, so that some blocks are awake. */
+static void part(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *what;
+        kent_surge_friction friction;
+        kent_separation separation;
+        double vapour; /* Pa over barometric */
+        int base;      /* row it is held against */
+    } kinds[] = {
+        {"engine, constant friction", KENT_SURGE_CONSTANT, KENT_SEPARATION_NONE, -1e5,
+         0},
+        {"  cavities asleep", KENT_SURGE_CONSTANT, KENT_SEPARATION_GAS, -1e5, 0},
+        {"engine, quasi-steady", KENT_SURGE_QUASI_STEADY, KENT_SEPARATION_NONE, -1e5,
+         2},
+        {"  cavities asleep", KENT_SURGE_QUASI_STEADY, KENT_SEPARATION_GAS, -1e5, 2},
+        {"  some awake", KENT_SURGE_QUASI_STEADY, KENT_SEPARATION_GAS, 1.5e6, 2}};
+    enum { KINDS = sizeof kinds / sizeof kinds[0] };
+    kent_build b = network_build();
+    kent_steady *s = NULL;
+    kent_grid *g = NULL;
+    kent_error err = {0};
+    const char *kernel = "";
+    double took[KINDS][RUNS], ratio[KINDS][RUNS];
+
+    if (kent_steady_solve(b.model, &s, &err) != KENT_OK ||
+        kent_grid_plan(b.model, 20.0, &g, &err) != KENT_OK) {
+        fail_msg("%s", err.what);
+    }
+    for (int i = 0; i < RUNS; i++) {
+        for (int kind = 0; kind < KINDS; kind++) {
+            b.model->solver.friction = kinds[kind].friction;
+            b.model->solver.column_separation = kinds[kind].separation;
+            b.model->water.vapour_pressure = b.model->barometric + kinds[kind].vapour;
+            took[kind][i] = time_engine(b.model, s, g, &kernel);
+            ratio[kind][i] = took[kind][i] / took[kinds[kind].base][i];
+        }
+    }
+    for (int kind = 0; kind < KINDS; kind++) {
+        report(kinds[kind].what, took[kind], g->node_total);
+        qsort(ratio[kind], RUNS, sizeof ratio[kind][0], by_size);
+        if (kind == kinds[kind].base) continue;
+        (void)printf("%-28s median %7.2f  least %7.2f\n", "    over none",
+                     ratio[kind][RUNS / 2], ratio[kind][0]);
+    }
+    kent_grid_free(g);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
 int main(void)
 {
-    const struct CMUnitTest tests[] = {cmocka_unit_test(race),
+    const struct CMUnitTest tests[] = {cmocka_unit_test(race), cmocka_unit_test(part),
                                        cmocka_unit_test(remember)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
