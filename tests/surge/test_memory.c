@@ -27,6 +27,8 @@ static kent_build small_main(void)
     const int v = kent_build_valve(&b, "V", "E", 0.05, 0.0);
     const int s = kent_build_scenario(&b, "shut", 60.0);
     kent_build_ramp(&b, s, KENT_EVENT_VALVE, v, 1.0, 3.0, 0.0);
+    kent_build_air_vessel(&b, "VES", "E", 2.0, 1.0);
+    kent_build_surge_tank(&b, "ST", "E", 3.0);
     kent_model *m = b.model; /* all that a march may keep */
     m->pipes[0].friction = KENT_COLEBROOK_WHITE;
     m->pipes[0].friction_coefficient = 1e-4;
