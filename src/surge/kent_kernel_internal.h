@@ -66,10 +66,11 @@ typedef struct kent_kernel {
 kent_status kent_kernel_pick(const char *wanted, const kent_kernel **out,
                              kent_error *err);
 
+/* NOLINTBEGIN(readability-function-size): arrays that restrict must name */
+
 /* One body for every instruction set: each caller compiles it for its own. floor NULL:
  * nothing is watched. Returns the number of nodes within the limit; in *below, of those
  * below the floor. */
-/* NOLINTNEXTLINE(readability-function-size): arrays that restrict must name */
 static inline __attribute__((always_inline)) int64_t
 kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
                  double *restrict p, double *restrict m, double *restrict highest,
@@ -96,7 +97,6 @@ kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
 }
 
 /* Block by block. What a block receives over its edges it must watch as well. */
-/* NOLINTNEXTLINE(readability-function-size): the same */
 static inline __attribute__((always_inline)) int64_t
 kent_kernel_blocks(size_t n, double limit, int implicit, const double *restrict k,
                    double *restrict p, double *restrict m, double *restrict highest,
@@ -122,5 +122,7 @@ kent_kernel_blocks(size_t n, double limit, int implicit, const double *restrict 
     }
     return (int64_t)n - within;
 }
+
+/* NOLINTEND(readability-function-size) */
 
 #endif
