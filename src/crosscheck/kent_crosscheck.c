@@ -7,8 +7,8 @@ const double KENT_CROSSCHECK_ASKED = 0.02;
 
 /* m, of the coarser mesh: at most, and how many cells a main has at least and at most
  * (spans shorter than three cells apart). */
-static const double LONGEST_CELL = 20.0;
-static const double CELLS_LEAST = 200.0, CELLS_MOST = 3000.0;
+static const double LONGEST_CELL = 40.0;
+static const double CELLS_LEAST = 100.0, CELLS_MOST = 3000.0;
 /* A rigid column is 1000 times as stiff; asked of events that take so many 2L/a. */
 static const double RIGID = 1000.0, SLOW = 4.0;
 

@@ -25,16 +25,23 @@ double kent_passage_loss(double k, double flow, double *derivative)
 kent_opening kent_passage_opening(double e, double conductance, double flow,
                                   double drop)
 {
-    if (!(e > 0.0)) return (kent_opening){flow, 1.0, 0.0};
+    if (!(e > 0.0)) return (kent_opening){flow, 1.0, 0.0, 0.0};
     if (e < conductance) { /* less than 1 m of pipe's head at 1 m of its own */
         const double size = hypot(drop, LEVEL_OFF);
         const double root = sqrt(size);
-        return (kent_opening){flow - e * drop / root, 1.0,
-                              -e / root * (1.0 - 0.5 * drop * drop / (size * size))};
+        const double by_drop = (1.0 - 0.5 * drop * drop / (size * size)) / root;
+        return (kent_opening){flow - e * drop / root, 1.0, -e * by_drop, -drop / root};
     }
     double by_flow = 0.0;
     const double square = kent_passage_square(flow, &by_flow);
-    return (kent_opening){square - e * e * drop, by_flow, -e * e};
+    return (kent_opening){square - e * e * drop, by_flow, -e * e, -2.0 * e * drop};
+}
+
+kent_opening kent_passage_one_way(double e, double conductance, double flow,
+                                  double drop)
+{
+    if (!(drop > 0.0)) return (kent_opening){flow, 1.0, 0.0, 0.0};
+    return kent_passage_opening(e, conductance, flow, drop);
 }
 
 /* ---- levels ---------------------------------------------------------------------- */
@@ -98,8 +105,8 @@ static kent_status add_levels(kent_passages *links, const kent_model *m,
 
 /* All of a flow above some head, none below, what keeps that head in between: 17.10. As
  * one equation, q = middle of (0, q + c (H - z), Q). */
-static void draw_at_any_pressure(const kent_draw_link *d, double flow, const double *u,
-                                 kent_law *law)
+static void draw_at_any_pressure(const kent_draw_passage *d, double flow,
+                                 const double *u, kent_law *law)
 {
     const double q = u[KENT_AT_FLOW];
     const double held = q + d->conductance * (u[KENT_AT_HEAD] - d->level);
@@ -117,7 +124,7 @@ static void draw_at_any_pressure(const kent_draw_link *d, double flow, const dou
 
 static void draw_law(const kent_passage *l, double time, const double *u, kent_law *law)
 {
-    const kent_draw_link *d = &l->is.draw;
+    const kent_draw_passage *d = &l->is.draw;
     const double flow = kent_timetable_value(&l->timetable, time);
     if (flow <= 0.0 || d->full <= 0.0) {
         draw_at_any_pressure(d, flow, u, law);
@@ -141,12 +148,12 @@ static kent_status add_draws(kent_passages *links, const kent_model *m,
         const int node[2] = {o->node, -1};
         kent_passage *l = kent_passages_add(links, &DRAW, m->points[o->point].id, node);
         if (!l) return kent_error_nomem(err);
-        l->is.draw = (kent_draw_link){.level = m->points[o->point].at.z,
-                                      .full = o->pressure_dependent
-                                                  ? o->full_pressure /
-                                                        (m->water.density * m->gravity)
-                                                  : 0.0,
-                                      .conductance = kent_node_conductance(m, o->node)};
+        l->is.draw = (kent_draw_passage){
+            .level = m->points[o->point].at.z,
+            .full = o->pressure_dependent
+                        ? o->full_pressure / (m->water.density * m->gravity)
+                        : 0.0,
+            .conductance = kent_node_conductance(m, o->node)};
         l->start[0] = s->outflow[i];
         const kent_status status = kent_timetable_fill(
             &l->timetable, m, scenario, KENT_EVENT_OUTFLOW, (int)i, o->flow, err);
@@ -160,7 +167,7 @@ static kent_status add_draws(kent_passages *links, const kent_model *m,
 /* 17.12 */
 static void gate_law(const kent_passage *l, double time, const double *u, kent_law *law)
 {
-    const kent_gate_link *g = &l->is.gate;
+    const kent_gate_passage *g = &l->is.gate;
     const double opening = kent_timetable_value(&l->timetable, time);
     const double e =
         g->capacity * kent_valve_relative_capacity(&g->valve->curve, opening);
@@ -183,8 +190,8 @@ static kent_status add_gates(kent_passages *links, const kent_model *m,
         if (v->node[0] < 0) continue;
         kent_passage *l = kent_passages_add(links, &GATE, v->id, v->node);
         if (!l) return kent_error_nomem(err);
-        l->is.gate = (kent_gate_link){v, s->valve_capacity[i], v->discharge_level,
-                                      kent_passage_conductance(m, v->node)};
+        l->is.gate = (kent_gate_passage){v, s->valve_capacity[i], v->discharge_level,
+                                         kent_passage_conductance(m, v->node)};
         l->start[0] = s->valve_flow[i];
         const kent_status status = kent_timetable_fill(
             &l->timetable, m, scenario, KENT_EVENT_VALVE, (int)i, v->opening, err);
@@ -239,10 +246,52 @@ void kent_passages_free(kent_passages *links)
 {
     if (!links) return;
     for (size_t i = 0; i < links->count; i++) {
+        if (links->link[i].clear) links->link[i].clear(&links->link[i]);
         kent_timetable_clear(&links->link[i].timetable);
     }
     free(links->link);
     free(links);
+}
+
+static kent_stand_add *const STANDS[KENT_DEVICE_KINDS] = {
+    [KENT_DEVICE_PUMP] = kent_stand_pump,
+    [KENT_DEVICE_CHECK_VALVE] = kent_stand_check_valve,
+    [KENT_DEVICE_CONTROL_VALVE] = kent_stand_control_valve,
+    [KENT_DEVICE_SURGE_TANK] = kent_stand_surge_tank,
+    [KENT_DEVICE_ONE_WAY_TANK] = kent_stand_one_way_tank,
+    [KENT_DEVICE_AIR_VESSEL] = kent_stand_air_vessel,
+    [KENT_DEVICE_RELIEF_VALVE] = kent_stand_relief_valve,
+    [KENT_DEVICE_AIR_VALVE] = kent_stand_air_valve,
+    [KENT_DEVICE_BURST] = kent_stand_burst,
+};
+
+static bool is_left_out(const kent_model *m, int scenario, const kent_device *d)
+{
+    if (scenario < 0) return false;
+    const kent_scenario *s = &m->scenarios[scenario];
+    for (size_t i = 0; i < s->without_count; i++) {
+        const kent_left_out *w = &m->without[s->without_first + i];
+        if (w->kind == d->kind && w->index == d->index) return true;
+    }
+    return false;
+}
+
+static kent_status add_stands(kent_passages *links, const kent_model *m,
+                              const kent_steady *s, int scenario, kent_error *err)
+{
+    kent_status status = KENT_OK;
+    for (size_t i = 0; i < m->device_count && !status; i++) {
+        const kent_device *d = &m->devices[i];
+        kent_stand stand = {m, d, scenario, s->device_flow[i], {0.0, 0.0}};
+        if ((d->node[0] < 0 && d->node[1] < 0) || is_left_out(m, scenario, d)) {
+            continue;
+        }
+        for (int side = 0; side < 2; side++) {
+            if (d->node[side] >= 0) stand.head[side] = s->node_head[d->node[side]];
+        }
+        status = STANDS[d->kind](links, &stand, err);
+    }
+    return status;
 }
 
 kent_status kent_passages_new(const kent_model *m, const kent_steady *s, int scenario,
@@ -253,6 +302,7 @@ kent_status kent_passages_new(const kent_model *m, const kent_steady *s, int sce
     kent_status status = add_levels(links, m, s, scenario, err);
     if (!status) status = add_draws(links, m, s, scenario, err);
     if (!status) status = add_gates(links, m, s, scenario, err);
+    if (!status) status = add_stands(links, m, s, scenario, err);
     if (status) {
         kent_passages_free(links);
         return status;

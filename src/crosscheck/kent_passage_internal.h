@@ -43,38 +43,118 @@ typedef struct kent_passage_ops {
     void (*due)(kent_passage *l, double time, double *u);
 } kent_passage_ops;
 
-typedef struct kent_level_link {
+typedef struct kent_level_passage {
     double loss; /* s2/m5: (1 + loss)/(2 g A2) of what flows out of it */
-} kent_level_link;
+} kent_level_passage;
 
-typedef struct kent_draw_link {
+typedef struct kent_draw_passage {
     double level;       /* m, of the pipe there */
     double full;        /* m, head at which all is drawn; 0: whatever the pressure */
     double conductance; /* m2/s, of the pipes that end there */
-} kent_draw_link;
+} kent_draw_passage;
 
-typedef struct kent_gate_link {
+typedef struct kent_gate_passage {
     const kent_valve *valve;
     double capacity;    /* m^2.5/s at full opening */
     double level;       /* m, where it discharges */
     double conductance; /* m2/s, the least of both sides' pipes */
-} kent_gate_link;
+} kent_gate_passage;
+
+/* The one-way valve of a pump or in line: its delay, and whether it is shut. */
+typedef struct kent_gate_flap {
+    kent_check_kind kind;
+    double delay;    /* s from the first reversal to closure */
+    double shuts_at; /* s; INFINITY: the flow has not reversed */
+    bool shut;
+} kent_gate_flap;
+
+typedef struct kent_unit_passage { /* units of a pump that fare alike */
+    const kent_pump *pump;
+    int units;
+    const kent_event **event; /* [event_count] that concern it, by start; ours */
+    size_t event_count, begun;
+    double slope;    /* rad/s2, of a speed that is driven */
+    double ramp_end; /* s; INFINITY: none goes on */
+    double to;       /* rad/s, at its end */
+    bool free;       /* power is lost: the speed follows from inertia and torque */
+    bool standing;   /* behind its check valve, never yet started */
+    kent_gate_flap flap;
+} kent_unit_passage;
+
+typedef struct kent_flap_passage { /* a check valve in line */
+    double loss;                   /* s2/m5, when open */
+    kent_gate_flap flap;
+} kent_flap_passage;
+
+typedef struct kent_control_passage {
+    kent_holds holds;
+    double set;                        /* m: head that it holds */
+    double capacity;                   /* m^2.5/s when open */
+    double opening_time, closure_time; /* s */
+    double conductance;                /* m2/s */
+} kent_control_passage;
+
+typedef struct kent_relief_passage {
+    double set, full, low;             /* m: heads; low -INFINITY: none */
+    double level;                      /* m, where it discharges */
+    double capacity;                   /* m^2.5/s when open */
+    double opening_time, closure_time; /* s */
+    double hold_time;                  /* s */
+    double conductance;                /* m2/s */
+    bool forced, armed; /* it opens for a fall it has seen; it may see one */
+} kent_relief_passage;
+
+typedef struct kent_store_passage { /* a surge tank, a one-way tank, an air vessel */
+    double area;                    /* m2 of its surface; INFINITY: level stays */
+    double overflow;                /* m; INFINITY: none */
+    double loss_out_of_main, loss_into_main; /* s2/m5 */
+    bool one_way;                            /* into the main only */
+    double conductance;                      /* m2/s */
+    kent_gas gas;              /* of a vessel, in the steady state; volume 0: none */
+    double level;              /* m, of a vessel's water then */
+    double barometric, weight; /* Pa absolute, N/m3 */
+} kent_store_passage;
+
+typedef struct kent_air_passage {
+    kent_orifice orifice;
+    double release, switched; /* m2 of what lets air out */
+    double switch_pressure;   /* Pa gauge; INFINITY: never */
+    double level, weight;     /* m, N/m3 */
+    double heat;              /* J/kg: R T */
+    bool open;                /* there is air under it */
+} kent_air_passage;
+
+typedef struct kent_hole_passage { /* a burst */
+    const kent_event *event;       /* [event_count] the scenario's */
+    size_t event_count;
+    int index;
+    double level;       /* m */
+    double root_2g;     /* m^0.5/s */
+    double conductance; /* m2/s */
+} kent_hole_passage;
 
 struct kent_passage {
     const kent_passage_ops *ops;
     const char *id;
-    int node[2];              /* -1: outside */
-    size_t at;                /* index of its flow in the unknowns; states follow */
-    size_t root_first;        /* its first root */
-    kent_timetable timetable; /* of its opening, flow, level, area or speed */
-    double alarm;             /* s, of its own next change; INFINITY: none */
+    int node[2];       /* -1: outside */
+    size_t at;         /* index of its flow in the unknowns; states follow */
+    size_t root_first; /* its first root */
+    void (*clear)(kent_passage *l); /* of what it owns; NULL: nothing */
+    kent_timetable timetable;       /* of its opening, flow, level, area or speed */
+    double alarm;                   /* s, of its own next change; INFINITY: none */
     double start[1 + KENT_PASSAGE_STATES]; /* flow and states in the steady state */
     double scale[1 + KENT_PASSAGE_STATES]; /* what of each is as much as 1 m of head */
-    int mode;
     union {
-        kent_level_link level;
-        kent_draw_link draw;
-        kent_gate_link gate;
+        kent_level_passage level;
+        kent_draw_passage draw;
+        kent_gate_passage gate;
+        kent_unit_passage unit;
+        kent_flap_passage flap;
+        kent_control_passage control;
+        kent_relief_passage relief;
+        kent_store_passage store;
+        kent_air_passage air;
+        kent_hole_passage hole;
     } is;
 };
 
@@ -109,9 +189,38 @@ double kent_passage_square(double flow, double *derivative);
  * takes part of it from pipes of a conductance (m2/s): f = 0 of 17.12, written so that
  * Newton's method finds its flow both wide open and nearly shut. */
 typedef struct kent_opening {
-    double f, by_flow, by_drop;
+    double f, by_flow, by_drop, by_e;
 } kent_opening;
 kent_opening kent_passage_opening(double e, double conductance, double flow,
                                   double drop);
+
+/* The same where nothing comes back: shut against a drop that is not above nil. */
+kent_opening kent_passage_one_way(double e, double conductance, double flow,
+                                  double drop);
+
+/* ---- what stands at nodes: each adds one of its kind to links ---------------------
+ */
+
+typedef struct kent_stand {
+    const kent_model *model;
+    const kent_device *device;
+    int scenario;   /* -1: none */
+    double flow;    /* m3/s in the steady state, as kent_device says */
+    double head[2]; /* m then, at its nodes; 0 where there is none */
+} kent_stand;
+
+typedef kent_status kent_stand_add(kent_passages *links, const kent_stand *stand,
+                                   kent_error *err);
+kent_stand_add kent_stand_pump, kent_stand_check_valve, kent_stand_control_valve,
+    kent_stand_relief_valve, kent_stand_surge_tank, kent_stand_one_way_tank,
+    kent_stand_air_vessel, kent_stand_air_valve, kent_stand_burst;
+
+/* Shut where the steady flow (m3/s) is not forward; a delay of nil is none. */
+kent_gate_flap kent_gate_flap_new(kent_check_kind kind, double delay, double flow);
+/* What it watches: its flow, and the head (m) that would open it. root: [2] */
+void kent_gate_flap_watch(const kent_gate_flap *f, double flow, double gap,
+                          double *root);
+/* What a root of it means. */
+void kent_gate_flap_cross(kent_gate_flap *f, double time, size_t root, bool rising);
 
 #endif

@@ -14,12 +14,18 @@
 #include <string.h>
 
 /* Of one step, in metres of head or what is as much: 17.14. */
-static const double TOLERANCE = 3e-4;
+static const double TOLERANCE = 1e-3;
 static const double RELATIVE = 1e-9;
 /* Longest step over the time in which a wave crosses a cell of the main. */
 static const double LONGEST_STEP = 2.0;
+/* 1/s, in place of 1/step where cells must stand still. */
+static const double STANDSTILL = 1e12;
+/* Share of the tolerance within which heads fit after a change. */
+static const double SETTLED = 1e-3;
 enum {
-    STEPS_MOST = 20000000, /* of a run */
+    CORRECTIONS_WHOLE = 20, /* of heads after a change; then by halves, ... */
+    CORRECTIONS_MOST = 80,  /* to this many */
+    STEPS_MOST = 20000000,  /* of a run */
     SWITCHES_MOST = 20000
 };
 
@@ -35,8 +41,8 @@ typedef struct run {
     double duration; /* s */
     SUNContext context;
     void *ida;
-    SUNMatrix matrix;
-    SUNLinearSolver solver;
+    SUNMatrix matrix, matrix_at_once; /* IDA's; for what changes at once */
+    SUNLinearSolver solver, solver_at_once;
     N_Vector y, rate, tolerance, changing, work;
     look *looks; /* [point_count] */
     kent_second_peak *extremes;
@@ -117,7 +123,9 @@ static void run_clear(run *r)
 {
     if (r->ida) IDAFree(&r->ida);
     if (r->solver) SUNLinSolFree(r->solver);
+    if (r->solver_at_once) SUNLinSolFree(r->solver_at_once);
     if (r->matrix) SUNMatDestroy(r->matrix);
+    if (r->matrix_at_once) SUNMatDestroy(r->matrix_at_once);
     N_Vector vectors[] = {r->y, r->rate, r->tolerance, r->changing, r->work};
     for (size_t i = 0; i < sizeof vectors / sizeof vectors[0]; i++) {
         if (vectors[i]) N_VDestroy(vectors[i]);
@@ -138,15 +146,19 @@ static bool make_parts(run *r)
     r->changing = N_VNew_Serial(n, r->context);
     r->work = N_VNew_Serial(n, r->context);
     r->matrix = SUNSparseMatrix(n, n, entries, CSR_MAT, r->context);
-    if (!r->y || !r->rate || !r->tolerance || !r->changing || !r->work || !r->matrix) {
+    r->matrix_at_once = SUNSparseMatrix(n, n, entries, CSR_MAT, r->context);
+    if (!r->y || !r->rate || !r->tolerance || !r->changing || !r->work || !r->matrix ||
+        !r->matrix_at_once) {
         return false;
     }
     r->solver = SUNLinSol_KLU(r->y, r->matrix, r->context);
+    r->solver_at_once = SUNLinSol_KLU(r->y, r->matrix_at_once, r->context);
     r->ida = IDACreate(r->context);
-    if (!r->solver || !r->ida) return false;
+    if (!r->solver || !r->solver_at_once || !r->ida) return false;
     /* Pivots that were good may be nil after a change of mode. Then KLU must go on, so
      * that the wrapper sees the condition and chooses pivots anew. */
     SUNLinSol_KLUGetCommon(r->solver)->halt_if_singular = 0;
+    SUNLinSol_KLUGetCommon(r->solver_at_once)->halt_if_singular = 0;
     return true;
 }
 
@@ -298,14 +310,57 @@ static kent_status tell_stop(run *r, int flag, double time, kent_error *err)
                           time, where, flag, r->said);
 }
 
-/* Heads and flows that fit the equations after something has changed at once. */
-static int make_consistent(run *r, double time)
+/* One step of Newton's method on heads and flows alone: cells and states stand still,
+ * as if the step were nil. Writes how much of its tolerance the furthest moved. */
+static bool correct_heads(run *r, double time, double share, double *most)
 {
-    const double next = time + 1e-3 * crossing_time(r->dae);
-    int flag = IDAReInit(r->ida, time, r->y, r->rate);
-    if (flag == IDA_SUCCESS) flag = IDACalcIC(r->ida, IDA_YA_YDP_INIT, next);
-    if (flag == IDA_SUCCESS) flag = IDAGetConsistentIC(r->ida, r->y, r->rate);
-    return flag;
+    const kent_dae *d = r->dae;
+    double *y = N_VGetArrayPointer(r->y), *f = N_VGetArrayPointer(r->rate);
+    double *step = N_VGetArrayPointer(r->work);
+    const double *changing = N_VGetArrayPointer(r->changing);
+    const double *tolerance = N_VGetArrayPointer(r->tolerance);
+
+    N_VConst(0.0, r->work);
+    kent_dae_residual(d, time, y, step, f);
+    for (size_t i = 0; i < d->size; i++) {
+        if (changing[i] > 0.0) f[i] = 0.0;
+    }
+    (void)call_derivatives(time, STANDSTILL, r->y, NULL, NULL, r->matrix_at_once, r,
+                           NULL, NULL, NULL);
+    if (SUNLinSolSetup(r->solver_at_once, r->matrix_at_once) != 0) return false;
+    if (SUNLinSolSolve(r->solver_at_once, r->matrix_at_once, r->work, r->rate, 0.0)) {
+        return false;
+    }
+    *most = 0.0;
+    for (size_t i = 0; i < d->size; i++) {
+        if (changing[i] > 0.0) continue;
+        y[i] -= share * step[i];
+        *most = fmax(*most, fabs(step[i]) / tolerance[i]);
+        if (!isfinite(y[i])) return false;
+    }
+    return true;
+}
+
+/* Heads and flows that fit the equations after something has changed at once, and the
+ * rates of the rest: 17.15. */
+static bool make_consistent(run *r, double time)
+{
+    const double *changing = N_VGetArrayPointer(r->changing);
+    double *rate = N_VGetArrayPointer(r->rate), *f = N_VGetArrayPointer(r->work);
+    double most = INFINITY;
+
+    for (int i = 0; most > SETTLED; i++) {
+        const double share =
+            i < CORRECTIONS_WHOLE ? 1.0 : 0.5; /* it may go to and fro */
+        if (i == CORRECTIONS_MOST) return false;
+        if (!correct_heads(r, time, share, &most)) return false;
+    }
+    N_VConst(0.0, r->rate);
+    kent_dae_residual(r->dae, time, N_VGetArrayPointer(r->y), rate, f);
+    for (size_t i = 0; i < r->dae->size; i++) {
+        rate[i] = changing[i] > 0.0 ? -f[i] : 0.0;
+    }
+    return IDAReInit(r->ida, time, r->y, r->rate) == IDA_SUCCESS;
 }
 
 /* Lets every link do what is due; when something next is, s. */
@@ -383,8 +438,11 @@ static kent_status go_through(run *r, kent_error *err)
     while (time < r->duration) {
         bool root = false;
         const double until = move_links(r, time);
-        const int flag = make_consistent(r, time);
-        if (flag < 0) return tell_stop(r, flag, time, err);
+        if (!make_consistent(r, time)) {
+            (void)snprintf(r->said, sizeof r->said,
+                           "no heads were found that fit what has changed");
+            return tell_stop(r, 0, time, err);
+        }
         take_heads(r, time);
         kent_status status = integrate(r, &time, until, &root, err);
         if (!status && root) status = cross_roots(r, time, err);
