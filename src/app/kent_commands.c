@@ -282,8 +282,10 @@ static kent_exit command_run(session *s)
     if (!code) code = do_job(s);
     if (!code) code = write_results(s);
     if (code || !s->options->strict || !s->results->limit_exceeded) return code;
-    (void)fprintf(stderr, "kentledge: --strict: a limit is exceeded (rating, vapour "
-                          "limit, or a fitting that nothing holds)\n");
+    (void)fprintf(stderr,
+                  "kentledge: --strict: a limit is exceeded (a rating, a lowest "
+                  "pressure, the vapour limit, a thin pipe pressed from "
+                  "outside, or a fitting that nothing holds)\n");
     return KENT_EXIT_LIMIT;
 }
 

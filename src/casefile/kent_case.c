@@ -230,6 +230,7 @@ static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
     kent_fill_creep(f);
     kent_fill_ground(f);
     kent_fill_loads(f);
+    kent_fill_limits(f);
     kent_fill_rules_check(f);
     if (r->complaints->count == 0 && f->model->pipe_count == 0 &&
         f->model->note_count == 0) {

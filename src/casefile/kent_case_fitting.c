@@ -227,6 +227,24 @@ static void check_fitting(kent_filling *f, kent_record *record,
     }
 }
 
+static void fill_rating(kent_filling *f, kent_record *record, kent_fitting_note *n)
+{
+    static const char *const MORE[] = {"surge_rating", "test_rating", "standard"};
+    n->rating = kent_record_number(record, "rating");
+    n->surge_rating = kent_record_number_or(record, "surge_rating", n->rating);
+    n->test_rating = kent_record_number_or(record, "test_rating", n->rating);
+    kent_record_copy(record, "standard", NULL, n->standard, sizeof n->standard);
+    for (size_t i = 0; i < sizeof MORE / sizeof MORE[0]; i++) {
+        if (!kent_record_has(record, MORE[i]) || kent_record_has(record, "rating")) {
+            continue;
+        }
+        kent_record_complain(&f->reader, record, MORE[i],
+                             "%s needs rating, what its parts are rated for in service",
+                             MORE[i]);
+        return;
+    }
+}
+
 void kent_fill_fitting(kent_filling *f, kent_record *record, size_t index)
 {
     kent_fitting_note *n = &f->model->notes[index];
@@ -246,6 +264,7 @@ void kent_fill_fitting(kent_filling *f, kent_record *record, size_t index)
     n->cover = kent_record_number(record, "cover");
     n->weight = kent_record_number(record, "weight");
     n->face = kent_record_number(record, "face");
+    fill_rating(f, record, n);
     n->apart = kent_record_switch(record, "apart", false);
     n->place = record->place;
     kent_reader_shelve(&f->reader, KENT_SHELF_FITTINGS, id->twig ? id->text : at->text,

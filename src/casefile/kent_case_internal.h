@@ -44,6 +44,7 @@ void kent_fill_rules(kent_filling *f);
 void kent_fill_rules_check(kent_filling *f);
 void kent_fill_ground(kent_filling *f);
 void kent_fill_loads(kent_filling *f);
+void kent_fill_limits(kent_filling *f);
 void kent_fill_solver(kent_filling *f);
 void kent_fill_creep(kent_filling *f); /* cautions where nothing creeps that should */
 

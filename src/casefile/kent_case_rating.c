@@ -85,6 +85,8 @@ void kent_fill_ratings(kent_filling *f, kent_record *record, const kent_pipe_cla
     };
     const double share =
         material ? kent_material_derating(material, f->model->water.temperature) : 1.0;
+    p->joint_rating = kent_record_number(record, "joint_rating");
+    p->plastic = material && material->plastic;
     bool own = false;
     bool of_class = false;
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {

@@ -99,6 +99,7 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
     s->duration = kent_record_number(record, "duration");
     s->class_of = class_of >= 0 ? (kent_class)class_of : KENT_OCCASIONAL;
     s->for_comparison = kent_record_switch(record, "for_comparison", false);
+    s->cycles_per_day = kent_record_number(record, "cycles_per_day");
     s->same_as = kent_record_field(record, "same_as")->index;
     s->place = record->place;
     kent_fill_scenario_states(f, record, s);
@@ -121,5 +122,11 @@ void kent_fill_scenario(kent_filling *f, kent_record *record, size_t index)
                              kent_class_word(s->class_of), "not given");
         }
         fill_events(f, record, s);
+    }
+    if (record->sound && !isnan(s->cycles_per_day) && s->class_of != KENT_RECURRING) {
+        kent_record_complain(&f->reader, record, "cycles_per_day",
+                             "cycles_per_day is of a scenario of class \"recurring\", "
+                             "and this one is %s",
+                             kent_class_word(s->class_of));
     }
 }

@@ -7,6 +7,8 @@
 #include "kent_gas.h"
 #include "kent_profile.h"
 #include "kent_pump.h"
+#include "kent_ring.h"
+#include "kent_screening.h"
 #include "kent_valve.h"
 #include "kent_water.h"
 #include "kent_wave.h"

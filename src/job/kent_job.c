@@ -1,6 +1,7 @@
 #include "kent_job.h"
 
 #include "kent_alarm.h"
+#include "kent_limit_table.h"
 #include "kent_limits.h"
 #include "kent_overload.h"
 #include "kent_scenario_run.h"
@@ -230,6 +231,7 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
         status = kent_recorder_finish(plan.recorder, &surge, &r->loads, err);
     }
     if (!status) status = kent_restraint_size(m, r->loads, &r->restraints, err);
+    if (!status) status = kent_limit_table_fill(r, err);
     if (!status) kent_limits_judge(r);
     if (!status && (r->cautions.failed || m->cautions.failed || m->assumed.failed)) {
         status = kent_error_nomem(err);

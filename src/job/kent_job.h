@@ -47,6 +47,36 @@ typedef struct kent_scenario_result { /* of one march */
                        either side of it; 0: none */
 } kent_scenario_result;
 
+/* What a pressure is held against. */
+typedef enum kent_limit_kind {
+    KENT_LIMIT_PIPE,     /* the pipe's rating */
+    KENT_LIMIT_JOINT,    /* that of its joints */
+    KENT_LIMIT_FITTING,  /* that of a fitting's own parts */
+    KENT_LIMIT_LOWEST,   /* the lowest pressure that the case asks for */
+    KENT_LIMIT_VAPOUR,   /* at which water boils */
+    KENT_LIMIT_COLLAPSE, /* outer less inner pressure at which a thin pipe buckles */
+    KENT_LIMIT_KINDS
+} kent_limit_kind;
+
+/* One case on one pipe or fitting: what it reached, where and when, and what is asked.
+ */
+typedef struct kent_limit {
+    kent_limit_kind kind;
+    kent_name when;     /* "static", "steady (low)", "test", a scenario's ... */
+    int state;          /* of steady flow; -1 */
+    int march;          /* index into results' scenarios; -1 */
+    int pipe, note;     /* one of the two; -1: the other: an index of the model's */
+    int span;           /* of a pipe; -1 */
+    int point;          /* -1: between points, or a fitting without a network */
+    double chainage;    /* m from the pipe's start; NAN */
+    double time;        /* s; NAN: outside marches, and between points */
+    double reached;     /* Pa gauge; of a collapse outer less inner; NAN: not known */
+    double asked;       /* Pa; NAN: nobody asks, or no rating is known */
+    kent_rating rating; /* that is asked, of pipes and fittings */
+    bool exceeded;
+    bool for_comparison; /* it decides nothing */
+} kent_limit;
+
 typedef struct kent_results {
     const kent_model *model; /* the caller's; must outlive the results */
     kent_steady **steadies;  /* [steady_count], by state */
@@ -58,9 +88,11 @@ typedef struct kent_results {
     size_t history_count;
     kent_loads_result *loads;
     kent_restraints *restraints;
+    kent_limit *limits; /* [limit_count] by case, then by kind, then pipe or fitting */
+    size_t limit_count;
     kent_notes cautions; /* of the case and the runs */
-    bool
-        limit_exceeded; /* rating, cavitation or a fitting nothing can hold: --strict */
+    bool limit_exceeded; /* one of limits, for a scenario that decides, or a fitting
+                            nothing can hold: --strict */
 } kent_results;
 
 typedef struct kent_job_options {

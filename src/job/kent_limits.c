@@ -59,7 +59,6 @@ static void judge_vapour(kent_results *r, const kent_scenario_result *run)
         name_of(m, run).s, kent_text_of(&where));
     kent_text_clear(&where);
     if (m->scenarios[run->scenario].for_comparison) return;
-    r->limit_exceeded = true;
     caution_touched(r, run);
 }
 
@@ -132,8 +131,21 @@ static void judge_grid(kent_results *r, const kent_scenario_result *run)
     kent_text_clear(&spans);
 }
 
+/* What is marched beside another must not look as if it were judged. */
+static void say_compared(kent_results *r)
+{
+    for (size_t i = 0; i < r->scenario_count; i++) {
+        const kent_scenario *s = &r->model->scenarios[r->scenarios[i].scenario];
+        if (!s->for_comparison) continue;
+        kent_notes_add(&r->cautions,
+                       "%s is for comparison: it decides no load case and no limit",
+                       s->id);
+    }
+}
+
 void kent_limits_judge(kent_results *r)
 {
+    say_compared(r);
     kent_overload_judge(r);
     if (r->loads) kent_site_test_caution(r->model, &r->loads->test, &r->cautions);
     for (size_t i = 0; i < r->scenario_count; i++) {

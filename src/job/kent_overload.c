@@ -1,25 +1,13 @@
 #include "kent_overload.h"
 
+#include "kent_limit_table.h"
+#include "kent_reach.h"
 #include "kent_said.h"
 
 #include <math.h>
+#include <string.h>
 
 enum { NAMED = 6 }; /* places told of one case; the rest are counted */
-
-/* The highest pressure on a span in one case. */
-typedef struct reached {
-    double pressure; /* Pa gauge; -INFINITY: none yet */
-    double chainage; /* m from the span's start */
-    int point;       /* -1: between points */
-} reached;
-
-/* One case as it is judged. */
-typedef struct judgement {
-    kent_results *results;
-    const char *when;
-    kent_rating rating;
-    size_t passed; /* spans so far */
-} judgement;
 
 /* ---- saying it ------------------------------------------------------------------- */
 
@@ -43,142 +31,114 @@ static void add_rating(const kent_model *m, const kent_pipe *p, kent_rating rati
     if (p->standard[0] != '\0') kent_text_add(out, " (%s)", p->standard);
 }
 
-static void say_passed(const judgement *j, int span, const reached *at)
+static void add_pressure(const kent_model *m, double pressure, kent_text *out)
 {
-    const kent_model *m = j->results->model;
-    kent_text words = {0};
-    kent_text_add(&words, "pipe %s: %s reached ", m->spans[span].id,
-                  kent_said_of(KENT_PRESSURE, m->units, at->pressure).s);
-    if (at->point >= 0) {
-        kent_text_add(&words, "at %s", m->points[at->point].id);
+    kent_text_add(out, "%s", kent_said_of(KENT_PRESSURE, m->units, pressure).s);
+}
+
+static void add_place(const kent_model *m, const kent_limit *l, kent_text *out)
+{
+    if (l->note >= 0) return; /* it is its place */
+    if (l->point >= 0) {
+        kent_text_add(out, " at %s", m->points[l->point].id);
     } else {
-        kent_text_add(&words, "%s along it",
-                      kent_said_whole(KENT_LENGTH, m->units, at->chainage).s);
+        const double start = m->chainage[m->spans[l->span].route_first];
+        kent_text_add(out, " %s along it",
+                      kent_said_whole(KENT_LENGTH, m->units, l->chainage - start).s);
     }
-    kent_text_add(&words, " in %s, ", j->when);
-    add_rating(m, &m->pipes[m->spans[span].pipe], j->rating, &words);
-    kent_notes_add(&j->results->cautions, "%s", kent_text_of(&words));
-    j->results->cautions.failed = j->results->cautions.failed || words.failed;
+}
+
+static void add_subject(const kent_model *m, const kent_limit *l, kent_text *out)
+{
+    if (l->note >= 0) {
+        kent_text_add(out, "fitting %s", m->notes[l->note].id);
+    } else if (l->kind == KENT_LIMIT_JOINT) {
+        kent_text_add(out, "joints of pipe %s", m->pipes[l->pipe].id);
+    } else {
+        kent_text_add(out, "pipe %s", m->spans[l->span].id);
+    }
+}
+
+static void add_asked(const kent_model *m, const kent_limit *l, kent_text *out)
+{
+    switch (l->kind) {
+    case KENT_LIMIT_PIPE:
+        add_rating(m, &m->pipes[l->pipe], l->rating, out);
+        return;
+    case KENT_LIMIT_JOINT:
+    case KENT_LIMIT_FITTING:
+        kent_text_add(out, "rated ");
+        break;
+    case KENT_LIMIT_LOWEST:
+        kent_text_add(out, "asked at least ");
+        break;
+    case KENT_LIMIT_COLLAPSE:
+        kent_text_add(out, "from outside, an unsupported ring of its wall buckles at ");
+        break;
+    case KENT_LIMIT_VAPOUR:
+    case KENT_LIMIT_KINDS:
+        break;
+    }
+    add_pressure(m, l->asked, out);
+    if (l->note < 0 || m->notes[l->note].standard[0] == '\0') return;
+    kent_text_add(out, " (%s)", m->notes[l->note].standard);
+}
+
+static void say_passed(kent_results *r, const kent_limit *l)
+{
+    const kent_model *m = r->model;
+    kent_text words = {0};
+    add_subject(m, l, &words);
+    kent_text_add(&words, ": ");
+    add_pressure(m, l->reached, &words);
+    kent_text_add(&words, " reached");
+    add_place(m, l, &words);
+    kent_text_add(&words, " in %s, ", l->when.s);
+    add_asked(m, l, &words);
+    kent_notes_add(&r->cautions, "%s", kent_text_of(&words));
+    r->cautions.failed = r->cautions.failed || words.failed;
     kent_text_clear(&words);
 }
 
-static void judge(judgement *j, int span, const reached *at)
+/* "3 more pipes pass their ratings in static". */
+static void say_rest(kent_results *r, const kent_limit *l, size_t passed)
 {
-    const kent_model *m = j->results->model;
-    const kent_pipe *p = &m->pipes[m->spans[span].pipe];
-    if (!(at->pressure > kent_pipe_rating(p, j->rating))) return; /* NaN: not known */
-    j->results->limit_exceeded = true;
-    if (j->passed++ < NAMED) say_passed(j, span, at);
-}
-
-static void say_rest(const judgement *j)
-{
-    if (j->passed <= NAMED) return;
-    kent_notes_add(&j->results->cautions, "%zu more pipes pass their ratings in %s",
-                   j->passed - NAMED, j->when);
-}
-
-/* ---- looking along a span -------------------------------------------------------- */
-
-static void take(reached *most, double pressure, double chainage, int point)
-{
-    if (pressure > most->pressure) *most = (reached){pressure, chainage, point};
-}
-
-/* head: m at the span's two ends; between points both head and level are straight
- * lines, so that the highest pressure is at a point. */
-static reached highest_of_line(const kent_model *m, const kent_span *span,
-                               const double head[2])
-{
-    reached most = {-INFINITY, 0.0, -1};
-    for (size_t k = 0; k < span->route_count; k++) {
-        const size_t at = span->route_first + k;
-        const double x = m->chainage[at] - m->chainage[span->route_first];
-        const double h = head[0] + x / span->length * (head[1] - head[0]);
-        const int point = m->route[at];
-        take(&most, kent_model_pressure(m, h, m->points[point].at.z), x, point);
-    }
-    return most;
-}
-
-static reached highest_of_march(const kent_model *m, const kent_scenario_result *run,
-                                size_t index)
-{
-    const kent_span *span = &m->spans[index];
-    const int reaches = run->grid->reaches[index];
-    reached most = {-INFINITY, 0.0, -1};
-    for (int n = 0; n <= reaches; n++) {
-        const double x = span->length * (double)n / (double)reaches;
-        const int point = n == 0         ? m->nodes[span->node[0]].point
-                          : n == reaches ? m->nodes[span->node[1]].point
-                                         : -1;
-        const double z = kent_span_level(m, span, x);
-        take(&most, kent_model_pressure(m, run->highest[index][n], z), x, point);
-    }
-    return most;
+    static const char *const WHAT[KENT_LIMIT_KINDS] = {
+        [KENT_LIMIT_PIPE] = "pipes pass their ratings",
+        [KENT_LIMIT_JOINT] = "pipes pass the ratings of their joints",
+        [KENT_LIMIT_FITTING] = "fittings pass their ratings",
+        [KENT_LIMIT_LOWEST] = "pipes fall below the lowest pressure asked",
+        [KENT_LIMIT_COLLAPSE] = "pipes are pressed beyond an unsupported ring",
+    };
+    if (passed <= NAMED) return;
+    kent_notes_add(&r->cautions, "%zu more %s in %s", passed - NAMED, WHAT[l->kind],
+                   l->when.s);
 }
 
 /* ---- the cases ------------------------------------------------------------------- */
 
-static void judge_static(kent_results *r)
+static bool of_one_case(const kent_limit *a, const kent_limit *b)
 {
-    const kent_model *m = r->model;
-    judgement j = {r, "static", KENT_RATING_SERVICE, 0};
-    for (size_t i = 0; i < m->span_count; i++) {
-        const double level = kent_static_level(m, m->spans[i].node[0]);
-        const reached at = highest_of_line(m, &m->spans[i], (double[2]){level, level});
-        judge(&j, (int)i, &at);
-    }
-    say_rest(&j);
+    return a->kind == b->kind && a->state == b->state && a->march == b->march &&
+           a->rating == b->rating && strcmp(a->when.s, b->when.s) == 0;
 }
 
-static void judge_steady(kent_results *r, size_t state)
+/* Every limit passed, of the test alone or of all else; what is near the vapour limit
+ * is said by whoever knows of cavities. */
+static void say_all(kent_results *r, bool test)
 {
-    const kent_model *m = r->model;
-    const double *head = r->steadies[state]->node_head;
-    const kent_name name = kent_name_in_state(m, "steady", (int)state);
-    judgement j = {r, name.s, KENT_RATING_SERVICE, 0};
-    for (size_t i = 0; i < m->span_count; i++) {
-        const int *node = m->spans[i].node;
-        const reached at =
-            highest_of_line(m, &m->spans[i], (double[2]){head[node[0]], head[node[1]]});
-        judge(&j, (int)i, &at);
+    size_t passed = 0;
+    for (size_t i = 0; i < r->limit_count; i++) {
+        const kent_limit *l = &r->limits[i];
+        const bool last = i + 1 == r->limit_count || !of_one_case(l, &r->limits[i + 1]);
+        const bool said = l->exceeded && !l->for_comparison &&
+                          l->kind != KENT_LIMIT_VAPOUR &&
+                          (l->rating == KENT_RATING_TEST) == test;
+        if (said && passed++ < NAMED) say_passed(r, l);
+        if (!last) continue;
+        say_rest(r, l, passed);
+        passed = 0;
     }
-    say_rest(&j);
-}
-
-static void judge_march(kent_results *r, const kent_scenario_result *run)
-{
-    const kent_model *m = r->model;
-    const kent_scenario *scenario = &m->scenarios[run->scenario];
-    const kent_name name = kent_name_in_state(m, scenario->id, run->state);
-    judgement j = {r, name.s,
-                   scenario->class_of == KENT_RECURRING ? KENT_RATING_RECURRING
-                                                        : KENT_RATING_SURGE,
-                   0};
-    for (size_t i = 0; i < m->span_count; i++) {
-        const reached at = highest_of_march(m, run, i);
-        judge(&j, (int)i, &at);
-    }
-    say_rest(&j);
-}
-
-/* Still water from the gauge; without one every place has the test pressure itself. */
-static void judge_test(kent_results *r, const kent_site_test *test)
-{
-    const kent_model *m = r->model;
-    judgement j = {r, "test", KENT_RATING_TEST, 0};
-    for (size_t i = 0; i < m->span_count; i++) {
-        const kent_span *span = &m->spans[i];
-        reached at = {test->pressure, 0.0, m->nodes[span->node[0]].point};
-        if (test->gauge >= 0) {
-            const double level = m->points[test->gauge].at.z +
-                                 test->pressure / (m->water.density * m->gravity);
-            at = highest_of_line(m, span, (double[2]){level, level});
-        }
-        judge(&j, (int)i, &at);
-    }
-    say_rest(&j);
 }
 
 /* What is held against nothing must not look as if it had passed. */
@@ -206,19 +166,10 @@ static void say_unrated(kent_results *r, kent_rating rating, const char *what,
 
 void kent_overload_judge(kent_results *r)
 {
-    const kent_site_test *test = &r->loads->test;
-    judge_static(r);
-    for (size_t i = 0; i < r->steady_count && r->model->span_count > 0; i++) {
-        judge_steady(r, i);
-    }
-    for (size_t i = 0; i < r->scenario_count; i++) {
-        const int scenario = r->scenarios[i].scenario;
-        if (r->model->scenarios[scenario].for_comparison) continue;
-        judge_march(r, &r->scenarios[i]);
-    }
+    say_all(r, false);
     say_unrated(r, KENT_RATING_SERVICE, "pressure", "what the main reaches there");
-    if (isnan(test->pressure)) return;
-    judge_test(r, test);
+    if (isnan(r->loads->test.pressure)) return;
+    say_all(r, true);
     say_unrated(r, KENT_RATING_TEST, "test", "the test pressure there");
 }
 
@@ -246,12 +197,14 @@ kent_worst kent_overload_of_marches(const kent_results *r)
         const kent_scenario_result *run = &r->scenarios[i];
         if (m->scenarios[run->scenario].for_comparison) continue;
         for (size_t s = 0; s < m->span_count; s++) {
-            const reached at = highest_of_march(m, run, s);
-            if (!isfinite(at.pressure) || at.pressure <= worst.pressure) continue;
             const kent_span *span = &m->spans[s];
-            worst = (kent_worst){at.pressure, kent_span_level(m, span, at.chainage),
-                                 nearest_point(m, span, at.chainage),
-                                 m->scenarios[run->scenario].id};
+            const kent_reached at =
+                kent_reach_of_march(m, run, (int)s, KENT_SEARCH_HIGHEST);
+            if (!isfinite(at.pressure) || at.pressure <= worst.pressure) continue;
+            const double x = at.chainage - m->chainage[span->route_first];
+            worst =
+                (kent_worst){at.pressure, kent_span_level(m, span, x),
+                             nearest_point(m, span, x), m->scenarios[run->scenario].id};
         }
     }
     return worst;

@@ -1,12 +1,12 @@
-/* Pressures that pipes meet, against what they are rated for: still water and steady
- * flow in service, scenarios with surge, the site test. */
+/* Limits that were passed, in words: what pipes and fittings are rated for, what the
+ * case asks for. */
 #ifndef KENT_OVERLOAD_H
 #define KENT_OVERLOAD_H
 
 #include "kent_job.h"
 
-/* Adds a caution to r->cautions for every rating passed, with its place, and sets
- * r->limit_exceeded; says of which pipes no rating is known. */
+/* Adds a caution to r->cautions for every limit passed that decides, with its place;
+ * says of which pipes no rating is known. */
 void kent_overload_judge(kent_results *r);
 
 /* The highest pressure that a march reaches anywhere on the main; its point is the

@@ -174,8 +174,8 @@ static void caution_pulse(kent_results *r, const kent_scenario_result *run)
 void kent_parting_judge(kent_results *r, const kent_scenario_result *run)
 {
     if (run->cavity_count == 0) return;
-    r->limit_exceeded = true;
     judge_run(r, run);
+    if (r->model->scenarios[run->scenario].for_comparison) return;
     caution_parted(r, run);
     caution_pulse(r, run);
 }

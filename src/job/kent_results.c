@@ -13,6 +13,7 @@ void kent_results_free(kent_results *r)
     kent_restraints_free(r->restraints);
     kent_loads_free(r->loads);
     kent_steady_free_states(r->steadies, r->steady_count);
+    free(r->limits);
     kent_notes_clear(&r->cautions);
     free(r);
 }

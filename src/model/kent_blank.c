@@ -36,6 +36,7 @@ kent_pipe kent_pipe_blank(void)
                        .surge_rating = NONE,
                        .recurring_rating = NONE,
                        .test_rating = NONE,
+                       .joint_rating = NONE,
                        .derating = 1.0,
                        .place = {-1, 0}};
 }
@@ -73,6 +74,9 @@ kent_fitting_note kent_note_blank(void)
                                .cover = NONE,
                                .weight = NONE,
                                .face = NONE,
+                               .rating = NONE,
+                               .surge_rating = NONE,
+                               .test_rating = NONE,
                                .branch = {.direction = {NONE, NONE, NONE},
                                           .outside_diameter = NONE,
                                           .inside_diameter = NONE},

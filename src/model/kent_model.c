@@ -31,6 +31,7 @@ kent_model *kent_model_new(void)
     m->loads.surge_allowance = USUAL_SURGE_ALLOWANCE;
     m->loads.future_pressure = (double)NAN;
     m->loads.static_level = (double)NAN;
+    m->asked = (kent_asked){NAN, {NAN, NAN, NAN}, NAN};
     m->loads.place = (kent_place){-1, 0};
     for (size_t i = 0; i < sizeof m->loads.factor / sizeof m->loads.factor[0]; i++) {
         m->loads.factor[i] = (double)NAN;

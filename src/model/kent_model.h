@@ -83,6 +83,8 @@ typedef struct kent_pipe {
     double surge_rating;     /* Pa, service and surge together; NAN */
     double recurring_rating; /* Pa, the same where the surge recurs; NAN */
     double test_rating;      /* Pa, under the site test; NAN */
+    double joint_rating;     /* Pa, of its joints, in every case; NAN */
+    bool plastic;            /* its material creeps, and tires */
     double derating;         /* of a plastic by temperature, on every rating; 1: none */
     size_t creep_first, creep_count; /* into kent_model.creep; 0: elastic */
     kent_place place;
@@ -332,8 +334,17 @@ typedef struct kent_scenario {
     size_t without_first, without_count; /* into kent_model.without */
     int same_as;         /* scenario whose events it repeats, to be set beside it; -1 */
     bool for_comparison; /* it decides no load case and no limit */
+    double cycles_per_day; /* how often pressure swings so; NAN */
     kent_place place;
 } kent_scenario;
+
+/* What the case asks for beyond the ratings of pipes and fittings. Pa gauge, NAN:
+ * nobody asks. */
+typedef struct kent_asked {
+    double lowest_steady;
+    double lowest[3]; /* by kent_class: lowest_recurring ... */
+    double life;      /* s that the main is to serve; NAN */
+} kent_asked;
 
 typedef struct kent_state_level {
     int fixed_level; /* index of the one that stands otherwise */
@@ -605,6 +616,9 @@ typedef struct kent_fitting_note {
     double cover;  /* m; NAN */
     double weight; /* N; NAN */
     double face;   /* m, of every port from geometry; NAN */
+    double rating; /* Pa, of its parts, as flanges are; NAN */
+    double surge_rating, test_rating; /* Pa, the same with surge, under test; NAN */
+    char standard[96];                /* that these are by; may be empty */
     size_t port_first, port_count; /* into kent_model.given_ports; 0: from geometry */
     kent_place place;
 } kent_fitting_note;
@@ -752,6 +766,7 @@ typedef struct kent_model {
     size_t given_port_count;
     kent_ground ground;
     kent_loads loads;
+    kent_asked asked; /* group `limits` */
     kent_rules rules;
     kent_solver solver;
     kent_creep *creep;

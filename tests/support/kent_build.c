@@ -415,6 +415,7 @@ int kent_build_scenario(kent_build *b, const char *id, double duration)
                                       .class_of = KENT_OCCASIONAL,
                                       .event_first = m->event_count,
                                       .same_as = -1,
+                                      .cycles_per_day = (double)NAN,
                                       .place = {0, 500 + i}};
     name(m->scenarios[i].id, id);
     return i;
