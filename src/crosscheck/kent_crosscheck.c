@@ -172,13 +172,14 @@ static void solve_job(void *context, size_t index)
     };
     kent_opinion *o = &p->out[i];
     kent_second_peak *const peaks[WAYS] = {o->peaks, o->coarse, o->rigid};
-    kent_second_report report = {0};
+    kent_second_report coarse = {0};
+    kent_second_report *const reports[WAYS] = {
+        [FINE] = &o->report, [COARSE] = &coarse, [STIFF] = &o->rigid_report};
     const kent_steady *s = p->steadies[p->marches[i].state];
     if (!peaks[index % WAYS]) return;
     p->statuses[index] = kent_second_solve(s->model, s, p->marches[i].scenario, 0.0,
                                            &meshes[index % WAYS], peaks[index % WAYS],
-                                           index % WAYS == FINE ? &o->report : &report,
-                                           &p->errors[index]);
+                                           reports[index % WAYS], &p->errors[index]);
 }
 
 static kent_status prepare(const plan *p, size_t i, kent_error *err)
@@ -221,6 +222,10 @@ kent_status kent_crosscheck_run(const kent_model *m, kent_steady *const *steadie
         status = p.statuses[j];
     }
     for (size_t i = 0; i < count && !status; i++) {
+        if (out[i].rigid_report.switches > 0) {
+            free(out[i].rigid); /* what slams has no end in a rigid column */
+            out[i].rigid = NULL;
+        }
         say_left_out(m, &out[i]);
         if (out[i].left_out.failed) status = kent_error_nomem(err);
     }

@@ -12,8 +12,9 @@ typedef struct kent_opinion { /* on one march */
     kent_second_peak *peaks;  /* [point_count] on the finer mesh */
     kent_second_peak *coarse; /* on cells twice as long: the whole difference is the
                                  method's own error */
-    kent_second_peak *rigid;  /* of a rigid column; NULL: the events are too fast */
-    kent_second_report report;
+    kent_second_peak
+        *rigid; /* of a rigid column; NULL: too fast, or a device switches */
+    kent_second_report report, rigid_report;
     double cell;           /* m, of the finer mesh, at most */
     double ramp;           /* s, of the quickest event; INFINITY: none; 0: sudden */
     double back_and_forth; /* s: 2L/a, twice the way from an event to where it is

@@ -7,11 +7,11 @@
  * proportion. */
 static const double BAND = 0.05;
 /* s: whole stroke of a valve that moves at once. */
-static const double AT_ONCE = 0.05;
+static const double AT_ONCE = 2e-3;
 /* Share of the stroke over which a valve slows down before its stops. */
 static const double CUSHION = 0.01;
 /* s: a relief valve follows what the pressure asks this closely. */
-static const double FOLLOWS = 0.02;
+static const double FOLLOWS = 1e-3;
 static const double OPEN = 0.999;
 
 /* ---- strokes --------------------------------------------------------------------- */
