@@ -22,7 +22,7 @@
 #include "kent_schedule_internal.h"
 
 /* Bytes of a device's state between instants; its file asserts that its own fits. */
-enum { KENT_DEVICE_STATE = 1152 };
+enum { KENT_DEVICE_STATE = 1280 };
 
 typedef struct kent_device_state {
     _Alignas(16) unsigned char bytes[KENT_DEVICE_STATE];

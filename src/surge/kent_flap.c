@@ -11,13 +11,15 @@ kent_flap kent_flap_new(kent_check_kind kind, double delay, double flow)
     return (kent_flap){.kind = at_once ? KENT_CHECK_IDEAL : kind,
                        .shut = !(flow > 0.0),
                        .delay = delay,
-                       .since = NAN};
+                       .since = NAN,
+                       .opened = -INFINITY};
 }
 
 bool kent_flap_move(kent_flap *f, double time, double flow)
 {
     if (f->kind != KENT_CHECK_DELAYED || f->shut) return false;
-    if (!(time - f->since >= f->delay * DELAY_END)) return false;
+    const double delay = fmin(f->delay, f->since - f->opened); /* opened so far only */
+    if (!(time - f->since >= delay * DELAY_END)) return false;
     f->shut = true;
     f->since = NAN;
     f->stopped = fmax(f->stopped, -flow);
@@ -50,6 +52,7 @@ void kent_flap_settle(kent_flap *f, double before, double flow, double time,
                       double step)
 {
     if (flow > 0.0) {
+        if (f->shut) f->opened = time - step;
         f->shut = false;
         f->since = NAN;
     } else if (f->kind == KENT_CHECK_IDEAL) {

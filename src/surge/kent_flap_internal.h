@@ -15,6 +15,7 @@ typedef struct kent_flap {
     bool shut;      /* of a delayed one: nothing comes back */
     double delay;   /* s from the first reversal to closure */
     double since;   /* s, when the flow reversed; NAN: it has not */
+    double opened;  /* s, when it last opened; -INFINITY: it was open at the start */
     double stopped; /* m3/s: the greatest reverse flow that a closure has stopped */
 } kent_flap;
 

@@ -280,6 +280,7 @@ static void record(kent_marcher *k, size_t row)
     const double *p = k->waves->p, *m = k->waves->m;
     double *head = k->head + row * k->eye_count, *flow = k->flow + row * k->eye_count;
     k->time[row] = now(k);
+    kent_stands_tell(k->ends->stands, k->devices + row * k->model->device_count);
     if (k->cavities && k->cavities->awake_blocks > 0) {
         record_awake(k, head, flow);
         return;
@@ -296,7 +297,6 @@ static void record(kent_marcher *k, size_t row)
         head[i] = 0.5 * sum;
         flow[i] = gap * eye->flow_per_gap;
     }
-    kent_stands_tell(k->ends->stands, k->devices + row * k->model->device_count);
 }
 
 size_t kent_marcher_advance(kent_marcher *k, size_t count, kent_trace *trace,

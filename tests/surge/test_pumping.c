@@ -241,6 +241,34 @@ static void a_restart_into_the_returning_wave(void **state)
     assert_within(coarse, fine, 0.2);
 }
 
+/* While the water is parted in the pipe, what devices tell goes on: a pump without
+ * power slows down at every step, and its flow is that of the pipe at its delivery. */
+static void a_pump_is_told_while_the_water_is_parted(void **state)
+{
+    (void)state;
+    main_of l;
+    double volume[101];
+    size_t parted = 0;
+    lift(&l, 1);
+    l.b.model->solver.column_separation = KENT_SEPARATION_GAS;
+    l.b.model->points[1].at.z = 45.0; /* the far end, above what the wave leaves */
+    l.b.model->pumps[l.pump].check_valve = KENT_CHECK_IDEAL;
+    add(&l, KENT_TRIP, 0.0, NAN, 0);
+    begin(&l, 8.0);
+    assert_int_equal(l.m.grid->reaches[0], 100);
+    double speed = INFINITY;
+    for (now n = {0}; n.time < 6.0;) {
+        n = next(&l, 0);
+        assert_true(n.device.told[0] < speed || n.time <= 0.01);
+        assert_within(n.device.flow, n.flow, 1e-6);
+        speed = n.device.told[0];
+        kent_marcher_hollow(l.m.marcher, 0, volume);
+        parted += volume[90] > 1e-6;
+    }
+    assert_true(parted > 100);
+    finish(&l);
+}
+
 /* The longer the valve stays open after the flow reversed, the faster is what it stops,
  * until the water that runs back is no longer sped up. */
 static void slam_grows_with_the_delay(void **state)
@@ -341,6 +369,7 @@ int main(void)
         cmocka_unit_test(without_an_event_nothing_changes),
         cmocka_unit_test(a_booster_trips_between_two_mains),
         cmocka_unit_test(a_restart_into_the_returning_wave),
+        cmocka_unit_test(a_pump_is_told_while_the_water_is_parted),
         cmocka_unit_test(slam_grows_with_the_delay),
         cmocka_unit_test(a_check_valve_in_line_holds_the_water_back),
     };
