@@ -47,7 +47,7 @@ static int point_of(const kent_build *b, int node)
 static void note_type(kent_build *b, const char *at, kent_fitting_type type)
 {
     const int note = kent_build_note(b, at);
-    b->model->notes[note].type = type;
+    b->model->notes[note].type = (int)type;
 }
 
 static void a_pump_from_a_level_has_one_node_and_is_no_fitting(void **state)
