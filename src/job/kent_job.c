@@ -194,20 +194,9 @@ static void copy_notes(const kent_notes *from, kent_notes *to)
     }
 }
 
-/* What a case may ask for and this version does not work out yet. */
-static kent_status kent_job_refuses(const kent_model *m, kent_error *err)
-{
-    if (m->solver.column_separation != KENT_SEPARATION_VAPOUR) return KENT_OK;
-    return kent_error_set(err, KENT_E_INPUT, m->file_count > 0 ? m->files[0] : "case",
-                          "solver.column_separation = \"vapour-cavity\" is not in this "
-                          "version; it is read and checked, but not worked out");
-}
-
 kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
                          kent_results **out, kent_error *err)
 {
-    const kent_status known = kent_job_refuses(m, err);
-    if (known) return known;
     kent_results *r = kent_alloc(1, sizeof *r);
     if (!r) return kent_error_nomem(err);
     r->model = m;

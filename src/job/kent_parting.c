@@ -161,12 +161,18 @@ static void caution_pulse(kent_results *r, const kent_scenario_result *run)
         const double time = c ? c->worst[KENT_RESULTANT].time : NAN;
         if (!c || !(time >= first)) continue;
         kent_notes *cautions = &r->restraints->fittings[i].cautions;
+        char stays[64] = ""; /* not known of a valve that is shut on the peak */
+        if (!isnan(c->above_90_percent)) {
+            (void)snprintf(stays, sizeof stays,
+                           "it stays above 90 %% of itself for %.3f s, and ",
+                           c->above_90_percent);
+        }
         kent_notes_add(
             cautions,
             "the governing peak, '%s' at %.4g s, comes after a cavity closed "
-            "(the first at %.4g s): it stays above 90 %% of itself for %.3f "
-            "s, and such peaks hang on how cavities are modelled",
-            c->title.s, time, first, c->above_90_percent);
+            "(the first at %.4g s): %ssuch peaks hang on how cavities are "
+            "modelled",
+            c->title.s, time, first, stays);
         r->cautions.failed = r->cautions.failed || cautions->failed;
     }
 }
