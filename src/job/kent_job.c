@@ -89,6 +89,17 @@ static kent_status give_grids(kent_march_plan *plan, kent_error *err)
     return KENT_OK;
 }
 
+/* What stopped a job, and in which scenario: others may run. */
+static kent_status stopped_in(const kent_march_plan *plan, size_t job, kent_error *err)
+{
+    const kent_error *cause = &plan->errors[job];
+    const kent_scenario_result *s = &plan->results->scenarios[job / plan_grids(plan)];
+    const char *id = plan->model->scenarios[s->scenario].id;
+    const kent_name name = kent_name_in_state(plan->model, id, s->state);
+    return kent_error_set(err, plan->statuses[job], cause->where, "scenario %s: %s",
+                          name.s, cause->what);
+}
+
 static kent_status march_all(kent_march_plan *plan, unsigned threads, kent_error *err)
 {
     kent_results *r = plan->results;
@@ -103,8 +114,7 @@ static kent_status march_all(kent_march_plan *plan, unsigned threads, kent_error
     kent_queue_run(jobs, threads, march_job, plan);
     for (size_t j = 0; j < jobs; j++) {
         if (!plan->statuses[j]) continue;
-        *err = plan->errors[j];
-        return plan->statuses[j];
+        return stopped_in(plan, j, err);
     }
     for (size_t i = 0; i < r->scenario_count; i++) {
         r->scenarios[i].uncertainty =

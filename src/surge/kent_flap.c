@@ -18,8 +18,8 @@ kent_flap kent_flap_new(kent_check_kind kind, double delay, double flow)
 bool kent_flap_move(kent_flap *f, double time, double flow)
 {
     if (f->kind != KENT_CHECK_DELAYED || f->shut) return false;
-    const double delay = fmin(f->delay, f->since - f->opened); /* opened so far only */
-    if (!(time - f->since >= delay * DELAY_END)) return false;
+    f->near = !(time - f->opened >= f->delay * DELAY_END);
+    if (!(time - f->since >= f->delay * DELAY_END)) return false;
     f->shut = true;
     f->since = NAN;
     f->stopped = fmax(f->stopped, -flow);
@@ -36,7 +36,7 @@ bool kent_flap_is_one_way(const kent_flap *f)
     case KENT_CHECK_DELAYED:
         break;
     }
-    return f->shut;
+    return f->shut || f->near;
 }
 
 /* 13.13 */
@@ -55,7 +55,7 @@ void kent_flap_settle(kent_flap *f, double before, double flow, double time,
         if (f->shut) f->opened = time - step;
         f->shut = false;
         f->since = NAN;
-    } else if (f->kind == KENT_CHECK_IDEAL) {
+    } else if (f->kind == KENT_CHECK_IDEAL || f->near) {
         f->shut = true;
     } else if (flow < 0.0 && !f->shut && isnan(f->since)) {
         f->since = time - step * (flow / (flow - fmax(before, 0.0)));

@@ -13,6 +13,7 @@
 typedef struct kent_flap {
     kent_check_kind kind;
     bool shut;      /* of a delayed one: nothing comes back */
+    bool near;      /* of a delayed one: open, but not for as long as its delay */
     double delay;   /* s from the first reversal to closure */
     double since;   /* s, when the flow reversed; NAN: it has not */
     double opened;  /* s, when it last opened; -INFINITY: it was open at the start */
