@@ -1,4 +1,5 @@
-"""run_case.py PROGRAM CASE: runs one case and holds its results against expected.csv.
+"""run_case.py PROGRAM CASE: runs one case and holds its results against expected.csv,
+or expected-NAME.csv where it is not called after its folder.
 
 A row of expected.csv is quantity,value,relative,absolute,source. quantity is a path into
 results.json in which elements of a list are named by their id, name, state or index:
@@ -56,10 +57,12 @@ def fault(row, results):
 
 def main(program, case):
     case = pathlib.Path(case)
-    with open(case.parent / "expected.csv", newline="") as file:
+    own = case.stem == case.parent.name  # a second case of a folder has its own table
+    table = "expected.csv" if own else f"expected-{case.stem}.csv"
+    with open(case.parent / table, newline="") as file:
         rows = list(csv.DictReader(file))
     if not rows:
-        print("expected.csv is empty")
+        print(f"{table} is empty")
         return 1
     with tempfile.TemporaryDirectory() as folder:
         out = pathlib.Path(folder) / "results"
