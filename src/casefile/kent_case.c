@@ -55,19 +55,19 @@ static const struct {
     const char *list, *group;
     size_t size, array, count; /* of an element; offsets in kent_model */
     kent_fill_one *fill;
-    int shelf;
     const char *name; /* key that names an element on the shelf */
-    int device;       /* kent_device_kind */
+    int shelf;
+    int device; /* kent_device_kind */
 } LISTS[] = {
 #define LIST(list, group, type, array, count, fill, shelf, name)                       \
     {                                                                                  \
         list, group, sizeof(type), offsetof(kent_model, array),                        \
-            offsetof(kent_model, count), fill, shelf, name, NO_DEVICE                  \
+            offsetof(kent_model, count), fill, name, shelf, NO_DEVICE                  \
     }
 #define DEVICES(list, group, type, array, count, fill, kind)                           \
     {                                                                                  \
         list, group, sizeof(type), offsetof(kent_model, array),                        \
-            offsetof(kent_model, count), fill, KENT_SHELF_DEVICES, "id", kind          \
+            offsetof(kent_model, count), fill, "id", KENT_SHELF_DEVICES, kind          \
     }
     LIST("soils", "soil", kent_soil, soils, soil_count, kent_fill_soil,
          KENT_SHELF_SOILS, "id"),

@@ -37,8 +37,8 @@ void kent_parts_find(const kent_model *m, const bool *passes, int *part)
     }
     for (size_t i = 0; i < m->device_count; i++) {
         const kent_device *d = &m->devices[i];
-        if (d->node[0] >= 0 && d->node[1] >= 0)
-            kent_parts_join(part, d->node[0], d->node[1]);
+        if (d->node[0] < 0 || d->node[1] < 0) continue;
+        kent_parts_join(part, d->node[0], d->node[1]);
     }
     for (size_t n = 0; n < m->node_count; n++) {
         part[n] = kent_parts_root(part, (int)n);

@@ -93,8 +93,8 @@ static void the_effective_time_is_that_of_the_steep_part(void **state)
 {
     (void)state;
     static double time[ROWS], even[ROWS], late[2 * ROWS];
-    for (int i = 0; i < ROWS; i++) {
-        time[i] = 0.01 * i;
+    for (size_t i = 0; i < ROWS; i++) {
+        time[i] = 0.01 * (double)i;
         const double t = fmin(1.0, fmax(0.0, (time[i] - 3.0) / 10.0));
         even[i] = 0.2 * (1.0 - t);
         late[2 * i] = -0.2 * (1.0 - t * t); /* against the pipe's direction */
