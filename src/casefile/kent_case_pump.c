@@ -81,6 +81,10 @@ static void fill_efficiencies(kent_filling *f, kent_record *record, kent_pump_cu
     c->rated_efficiency = between(flow, efficiency, count, c->rated_flow);
 }
 
+/* Below this rated efficiency the published characteristics give a pump that turns
+ * backwards more power than its water has (chapter 13). */
+static const double LEAST_EFFICIENCY = 0.65;
+
 /* What follows from a curve that is whole. */
 static void complete_curve(kent_filling *f, kent_record *record, kent_pump *p)
 {
@@ -92,6 +96,15 @@ static void complete_curve(kent_filling *f, kent_record *record, kent_pump *p)
         kent_record_complain(&f->reader, record, "flow_head",
                              "%s; correct flow_head or rated", wrong);
         return;
+    }
+    if (p->curve.rated_efficiency < LEAST_EFFICIENCY) {
+        kent_notes_add(
+            &m->cautions,
+            "pump %s: a rated efficiency of %.3g is less than that of any pump "
+            "whose complete characteristics are published (%.2f): turned "
+            "backwards by the water it is taken for a better turbine than it "
+            "is, and runs faster; is it the efficiency at the rated flow?",
+            p->id, p->curve.rated_efficiency, LEAST_EFFICIENCY);
     }
     if (!p->curve.outside) return;
     char caution[400];

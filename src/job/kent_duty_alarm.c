@@ -5,6 +5,9 @@
 /* Share beyond the last flow of a curve from which that is worth saying. */
 static const double BEYOND = 1.001;
 
+/* m: a smaller head pushes no water through a pump. */
+static const double PUSHED = 1e-3;
+
 /* Quantities in words, in the units that are shown. */
 static kent_said flow(const kent_model *m, double si)
 {
@@ -25,6 +28,16 @@ static void look_at_pump(const kent_steady *s, size_t device, const char *name,
     const kent_pump_duty duty = kent_steady_pump(s, device);
     const double last = c->flow[c->count - 1];
 
+    const bool one_way = p->check_valve != KENT_CHECK_NONE;
+    if (one_way && duty.running < p->in_parallel && duty.lift < -PUSHED) {
+        kent_notes_add(
+            cautions,
+            "pump %s: units stand, and the head before them is %s higher than "
+            "behind them: water would run on through them; they are taken to "
+            "be shut off, so let them run, or give water its way past them by "
+            "a pipe with a check valve",
+            name, length(m, -duty.lift).s);
+    }
     if (duty.running == 0) {
         if (duty.flow == 0.0) return;
         kent_notes_add(cautions,
@@ -34,21 +47,20 @@ static void look_at_pump(const kent_steady *s, size_t device, const char *name,
                        duty.flow < 0.0 ? "backwards" : "forwards");
         return;
     }
-    const double of_one = duty.flow / duty.running;
-    if (of_one == 0.0) {
+    if (duty.of_one == 0.0) {
         kent_notes_add(
             cautions,
             "pump %s: it runs without delivering: it lifts %s at no flow and "
             "%s are needed, so that its check valve is shut",
             name, length(m, c->head[0]).s, length(m, duty.lift).s);
-    } else if (of_one > BEYOND * last) {
+    } else if (duty.of_one > BEYOND * last) {
         kent_notes_add(cautions,
                        "pump %s: each unit passes %s, beyond the end of its curve at "
                        "%s, where its head is only assumed; give more of the curve, or "
                        "the main more resistance",
-                       name, flow(m, of_one).s, flow(m, last).s);
+                       name, flow(m, duty.of_one).s, flow(m, last).s);
     }
-    if (duty.running < p->in_parallel && p->check_valve == KENT_CHECK_NONE) {
+    if (duty.running < p->in_parallel && !one_way) {
         kent_notes_add(cautions,
                        "pump %s: %d of %d units stand and have no check valve, so that "
                        "water runs back through them; count only those that are not "

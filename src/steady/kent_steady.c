@@ -362,6 +362,14 @@ kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
     return status;
 }
 
+/* m3/s through one unit that stands without a check valve; its head goes with the
+ * square of its flow. */
+static double flow_standing(const kent_pump_curve *c, double lift)
+{
+    const double q = lift > 0.0 ? -c->rated_flow : c->rated_flow;
+    return q * sqrt(lift / kent_pump_at(c, q, 0.0).head);
+}
+
 kent_pump_duty kent_steady_pump(const kent_steady *s, size_t device)
 {
     const kent_device *d = &s->model->devices[device];
@@ -373,8 +381,12 @@ kent_pump_duty kent_steady_pump(const kent_steady *s, size_t device)
                            .lift = s->node_head[d->node[1]] - before};
     if (p->running > 0) {
         const double speed = p->curve.rated_speed;
-        const kent_pump_point at =
-            kent_pump_at(&p->curve, duty.flow / p->running, speed);
+        const int standing =
+            p->check_valve == KENT_CHECK_NONE ? p->in_parallel - p->running : 0;
+        duty.of_one = duty.flow;
+        if (standing > 0) duty.of_one -= standing * flow_standing(&p->curve, duty.lift);
+        duty.of_one /= p->running;
+        const kent_pump_point at = kent_pump_at(&p->curve, duty.of_one, speed);
         duty.power = p->running * at.torque * speed;
     }
     return duty;

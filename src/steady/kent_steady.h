@@ -53,9 +53,10 @@ kent_status kent_steady_solve_states(const kent_model *m, kent_steady **out,
 /* What a pump does in the steady state, all units that run together. */
 typedef struct kent_pump_duty {
     int running;
-    double flow;  /* m3/s, through it in all */
-    double lift;  /* m, from suction (level) to delivery, behind its check valve */
-    double power; /* W at the shafts */
+    double flow;   /* m3/s, through it in all */
+    double of_one; /* m3/s, through each that runs; 0: none does */
+    double lift;   /* m, from suction (level) to delivery, behind its check valve */
+    double power;  /* W at the shafts */
 } kent_pump_duty;
 
 /* device: index of a pump into kent_model.devices. */

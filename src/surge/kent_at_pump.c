@@ -11,6 +11,8 @@
 
 static const double PI = 3.14159265358979323846;
 static const double RAMP_END = 1.0 - 1e-12; /* as in kent_schedule */
+/* m: a smaller head pushes no water through a unit that stands. */
+static const double PUSHED = 1e-3;
 
 enum { GROUPS = 8, TRIES = 200 };
 
@@ -41,6 +43,7 @@ typedef struct station {
     size_t events;     /* that have begun */
     size_t count, lead;
     bool crowded, short_of_units, backwards;
+    bool pushed; /* a standing unit has held water back that ran forward */
     double slam; /* m/s, greatest so far */
     group groups[GROUPS];
 } station;
@@ -423,6 +426,14 @@ static void move(kent_device_state *state, const kent_schedule *schedule, double
     choose_lead(s);
 }
 
+static bool stands(const station *s)
+{
+    for (size_t i = 0; i < s->count; i++) {
+        if (s->groups[i].mode == STANDING) return true;
+    }
+    return false;
+}
+
 static void settle_unit(station *s, group *g, double flow)
 {
     const lift l = lift_at(s, g, flow);
@@ -437,9 +448,10 @@ static void settle(kent_device_state *state, double flow, const double head[2])
 {
     station *s = of(state);
     group *first = &s->groups[s->lead];
+    const double rise = rise_between(s, head);
+    if (rise < -PUSHED && stands(s)) s->pushed = true;
     if (first->mode == STANDING) return;
 
-    const double rise = rise_between(s, head);
     double by_rise = 0.0;
     const double q = (flow - others(s, rise, &by_rise)) / first->units;
     const double led = leading(s, q, rise).shut ? 0.0 : q;
@@ -477,10 +489,14 @@ static const char *beyond(const kent_device_state *state)
 static const char *caution(const kent_device_state *state)
 {
     const station *s = as(state);
+    if (s->short_of_units) {
+        return "had fewer units to trip, start or stop than an event asks for";
+    }
     if (s->backwards) return "turned backwards";
-    return s->short_of_units ? "had fewer units to trip, start or stop than an event "
-                               "asks for"
-                             : NULL;
+    if (!s->pushed) return NULL;
+    return "had units standing while the head before them was higher than behind them: "
+           "water would run on through them, which is not followed; they are taken to "
+           "be shut off";
 }
 
 const kent_device_ops KENT_AT_PUMP = {

@@ -234,6 +234,21 @@ static void choices_of_the_solver_arrive(void **state)
     kent_catalogue_free(c);
 }
 
+static void an_efficiency_below_all_published_ones_is_cautioned(void **state)
+{
+    (void)state;
+    const char *given[] = {"efficiency = 0.65;", "efficiency = 0.64;"};
+    kent_catalogue *c = read_catalogue();
+    for (int i = 0; i < 2; i++) {
+        char *text = replaced(DEVICE_CASE, "efficiency = 0.84;", given[i]);
+        kent_model *m = read_sound(c, text);
+        assert_int_equal(cautions_with(m, "pump PS: a rated efficiency of 0.64"), i);
+        kent_model_free(m);
+        free(text);
+    }
+    kent_catalogue_free(c);
+}
+
 static void starting_pumps_is_cautioned_once(void **state)
 {
     (void)state;
@@ -262,6 +277,7 @@ int main(void)
         cmocka_unit_test(a_scenario_takes_over_what_it_does_not_say),
         cmocka_unit_test(a_state_says_which_units_run),
         cmocka_unit_test(choices_of_the_solver_arrive),
+        cmocka_unit_test(an_efficiency_below_all_published_ones_is_cautioned),
         cmocka_unit_test(starting_pumps_is_cautioned_once),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -68,12 +68,28 @@ static void units_that_stand_without_a_check_valve_are_told(void **state)
     kent_build b = station(50.0);
     b.model->pumps[0].check_valve = KENT_CHECK_NONE;
     b.model->pumps[0].in_parallel = 2;
-    b.model->fixed_levels[0].level = 30.0;
+    b.model->fixed_levels[0].level = 40.0;
     assert_raised(&b, "pump PS: 1 of 2 units stand and have no check valve");
     kent_build c = station(50.0);
     c.model->pumps[0].check_valve = KENT_CHECK_NONE;
     c.model->pumps[0].running = 0;
     assert_raised(&c, "pump PS: it stands still and");
+}
+
+static void units_that_stand_in_the_way_of_water_are_told(void **state)
+{
+    (void)state;
+    kent_build b = station(50.0);
+    b.model->pumps[0].running = 0;
+    assert_raised(&b, NULL);
+    kent_build c = station(8.0); /* below the suction level */
+    c.model->pumps[0].running = 0;
+    assert_raised(&c,
+                  "pump PS: units stand, and the head before them is 2.00 m higher");
+    kent_build d = station(8.0);
+    d.model->pumps[0].check_valve = KENT_CHECK_NONE;
+    d.model->pumps[0].running = 0;
+    assert_raised(&d, "pump PS: it stands still and");
 }
 
 static void a_relief_valve_that_flows_is_told(void **state)
@@ -91,6 +107,7 @@ int main(void)
         cmocka_unit_test(a_pump_that_does_not_deliver_is_told),
         cmocka_unit_test(a_pump_beyond_its_curve_is_told),
         cmocka_unit_test(units_that_stand_without_a_check_valve_are_told),
+        cmocka_unit_test(units_that_stand_in_the_way_of_water_are_told),
         cmocka_unit_test(a_relief_valve_that_flows_is_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

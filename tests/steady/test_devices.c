@@ -325,6 +325,27 @@ static void pump_and_system_meet_where_munson_finds_it(void **state)
     kent_build_clear(&b);
 }
 
+/* One of two runs and part of its water runs back through the other: its duty is that
+ * of the one, by its own curve, and the water that both pass is what the main takes. */
+static void the_duty_of_one_beside_a_standing_one_is_its_own(void **state)
+{
+    (void)state;
+    kent_build b = rising_main(30.0);
+    kent_pump *pump = &b.model->pumps[0];
+    pump->in_parallel = 2;
+    pump->running = 1;
+    kent_steady *s = solve(&b);
+    const kent_pump_curve *c = &pump->curve;
+    const kent_pump_duty duty = kent_steady_pump(s, 0);
+    const kent_pump_point one = kent_pump_at(c, duty.of_one, c->rated_speed);
+    assert_within(one.head, duty.lift, 1e-9);
+    assert_within(duty.power, one.torque * c->rated_speed, 1e-9 * duty.power);
+    assert_true(duty.of_one > 1.01 * duty.flow);
+    assert_within(kent_pump_at(c, duty.flow - duty.of_one, 0.0).head, duty.lift, 1e-9);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
 static void a_pump_too_weak_for_the_lift_is_held_by_its_check_valve(void **state)
 {
     (void)state;
@@ -924,6 +945,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_station_delivers_where_its_curve_meets_the_main),
         cmocka_unit_test(pump_and_system_meet_where_munson_finds_it),
+        cmocka_unit_test(the_duty_of_one_beside_a_standing_one_is_its_own),
         cmocka_unit_test(a_pump_too_weak_for_the_lift_is_held_by_its_check_valve),
         cmocka_unit_test(a_standing_pump_lets_water_back_only_without_a_check_valve),
         cmocka_unit_test(boosters_in_series_add_their_lifts),

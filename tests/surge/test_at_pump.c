@@ -407,6 +407,25 @@ static void standing_units_start_one_after_another(void **state)
     rig_clear(&r);
 }
 
+/* Behind a check valve they pass nothing even where water would push them open. */
+static void standing_units_that_are_pushed_are_told(void **state)
+{
+    (void)state;
+    for (int pushed = 0; pushed < 2; pushed++) {
+        static rig r;
+        rig_pump(&r, 50.0, 2, 0);
+        r.pump.check_valve = KENT_CHECK_IDEAL;
+        r.far_level = pushed ? -1.0 : 1.0; /* the suction level is 0 m */
+        rig_start(&r, AREA, WAVE, 0.0, 0.01, 0);
+        march(&r, 1.0);
+        assert_true(r.flow == 0.0);
+        const char *said = r.ops->caution(&r.state);
+        assert_int_equal(said != NULL, pushed);
+        if (said) assert_non_null(strstr(said, "water would run on through them"));
+        rig_clear(&r);
+    }
+}
+
 static void too_many_different_conditions_are_refused(void **state)
 {
     (void)state;
@@ -514,6 +533,7 @@ int main(void)
         cmocka_unit_test(groups_with_one_history_act_as_one),
         cmocka_unit_test(one_of_three_trips),
         cmocka_unit_test(standing_units_start_one_after_another),
+        cmocka_unit_test(standing_units_that_are_pushed_are_told),
         cmocka_unit_test(too_many_different_conditions_are_refused),
         cmocka_unit_test(power_restored_onto_a_turning_pump),
         cmocka_unit_test(derivatives_are_those_of_differences),
