@@ -26,26 +26,27 @@ static double instant_of(double t0, double q0, double t1, double q1, double flow
     return q1 == q0 ? t1 : t0 + (flow - q0) / (q1 - q0) * (t1 - t0);
 }
 
-/* 18.6. The change is that from the first flow to the one farthest from it; flow is
- * read every stride-th element. */
-double kent_screening_effective_time(const double *time, const double *flow,
-                                     size_t count, size_t stride)
+/* 18.6. The change is that from the first flow to the one farthest from it. */
+double kent_screening_effective_time(const double *time, size_t time_stride,
+                                     const double *flow, size_t flow_stride,
+                                     size_t count)
 {
     size_t farthest = 0;
     for (size_t i = 1; i < count; i++) {
-        const double gap = fabs(flow[i * stride] - flow[0]);
-        if (gap > fabs(flow[farthest * stride] - flow[0])) farthest = i;
+        const double gap = fabs(flow[i * flow_stride] - flow[0]);
+        if (gap > fabs(flow[farthest * flow_stride] - flow[0])) farthest = i;
     }
-    const double change = count > 0 ? flow[farthest * stride] - flow[0] : 0.0;
+    const double change = count > 0 ? flow[farthest * flow_stride] - flow[0] : 0.0;
     if (!(fabs(change) > 0.0)) return NAN;
     double at[2] = {NAN, NAN}; /* s, of 10 and of 90 % */
     for (size_t i = 1; i <= farthest; i++) {
-        const double before = (flow[(i - 1) * stride] - flow[0]) / change;
-        const double share = (flow[i * stride] - flow[0]) / change;
+        const double before = (flow[(i - 1) * flow_stride] - flow[0]) / change;
+        const double share = (flow[i * flow_stride] - flow[0]) / change;
+        const double t0 = time[(i - 1) * time_stride], t1 = time[i * time_stride];
         for (int k = 0; k < 2; k++) {
             const double mark = k == 0 ? 0.1 : 0.9;
             if (!isnan(at[k]) || share < mark) continue;
-            at[k] = instant_of(time[i - 1], before, time[i], share, mark);
+            at[k] = instant_of(t0, before, t1, share, mark);
         }
     }
     return (at[1] - at[0]) / 0.8;

@@ -19,9 +19,10 @@ double kent_screening_slow(double density, double length, double velocity, doubl
 double kent_screening_linear(double sudden, double return_time, double time);
 
 /* s: the time in which a flow would change whole if it went on changing as it does
- * between 10 and 90 % of the change. time [count] s, rising; flow [count] m3/s. NAN:
- * it does not change. source docs/theory 18.6 */
-double kent_screening_effective_time(const double *time, const double *flow,
-                                     size_t count, size_t stride);
+ * between 10 and 90 % of the change. time [count] s, rising; flow [count] m3/s, each
+ * read every so many elements. NAN: it does not change. source docs/theory 18.6 */
+double kent_screening_effective_time(const double *time, size_t time_stride,
+                                     const double *flow, size_t flow_stride,
+                                     size_t count);
 
 #endif

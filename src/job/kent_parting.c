@@ -12,12 +12,11 @@ static kent_name name_of(const kent_model *m, const kent_scenario_result *run)
     return kent_name_in_state(m, m->scenarios[run->scenario].id, run->state);
 }
 
-/* Litres or US gallons: cavities are small. */
-static kent_said said_volume(const kent_model *m, double volume)
+kent_said kent_parting_volume(kent_system system, double volume)
 {
     static const double LITRE = 1e-3, GALLON = 3.785411784e-3; /* m3 */
     kent_said said;
-    if (m->units == KENT_US) {
+    if (system == KENT_US) {
         (void)snprintf(said.s, sizeof said.s, "%.3g gal", volume / GALLON);
     } else {
         (void)snprintf(said.s, sizeof said.s, "%.3g L", volume / LITRE);
@@ -113,7 +112,8 @@ static void judge_run(kent_results *r, const kent_scenario_result *run)
     kent_notes_add(&r->cautions,
                    "%s: the water parts%s; the largest cavity takes %s, at %.3g s; %s",
                    name_of(m, run).s, kent_text_of(&where),
-                   said_volume(m, c->largest).s, c->largest_at, kent_text_of(&closes));
+                   kent_parting_volume(m->units, c->largest).s, c->largest_at,
+                   kent_text_of(&closes));
     r->cautions.failed = r->cautions.failed || where.failed || closes.failed;
     kent_text_clear(&where);
     kent_text_clear(&closes);
@@ -126,9 +126,9 @@ static void caution_parted(kent_results *r, const kent_scenario_result *run)
         const int point = m->fittings[i].point;
         kent_notes *cautions = &r->restraints->fittings[i].cautions;
         if (point < 0 || !(run->hollow[point] > 0.0)) continue;
-        kent_notes_add(cautions,
-                       "%s: the water parts at or next to it: a cavity of up to %s",
-                       name_of(m, run).s, said_volume(m, run->hollow[point]).s);
+        kent_notes_add(
+            cautions, "%s: the water parts at or next to it: a cavity of up to %s",
+            name_of(m, run).s, kent_parting_volume(m->units, run->hollow[point]).s);
         r->cautions.failed = r->cautions.failed || cautions->failed;
     }
 }

@@ -1,3 +1,4 @@
+#include "kent_page.h"
 #include "kent_pressures.h"
 #include "kent_said.h"
 #include "kent_shown.h"
@@ -9,19 +10,6 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
-
-/* What the parts of one printed report share. */
-typedef struct kent_page {
-    const kent_results *results;
-    const kent_model *model;
-    kent_system units;
-    size_t limit; /* columns of a line; 0: none */
-    size_t
-        *order; /* [fitting_count] what cannot be held first, then along the routes */
-    char (*letter)[4]; /* [fitting_count] of its note; "" none */
-    bool cut;          /* a name was cut short */
-    kent_text *out;
-} kent_page;
 
 /* ---- the page -------------------------------------------------------------------- */
 
@@ -562,6 +550,7 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
     kent_page page = {.results = r,
                       .model = r->model,
                       .units = o->units,
+                      .wide = o->wide,
                       .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
                       .out = &out};
     kent_status status = page_open(&page);
@@ -574,6 +563,12 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
     print_totals(&page);
     print_pressures(&page);
     print_scenarios(&page);
+    kent_page_limits(&page);
+    kent_page_devices(&page);
+    kent_page_cavities(&page);
+    kent_page_twins(&page);
+    kent_page_screening(&page);
+    kent_page_swings(&page);
     if (o->wide) print_rest(&page);
     print_end(&page);
     status = kent_sink_flush(sink, &out);

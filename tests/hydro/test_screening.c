@@ -99,8 +99,8 @@ static void the_effective_time_is_that_of_the_steep_part(void **state)
         even[i] = 0.2 * (1.0 - t);
         late[2 * i] = -0.2 * (1.0 - t * t); /* against the pipe's direction */
     }
-    assert_close(kent_screening_effective_time(time, even, ROWS, 1), 10.0, 1e-9);
-    assert_close(kent_screening_effective_time(time, late, ROWS, 2),
+    assert_close(kent_screening_effective_time(time, 1, even, 1, ROWS), 10.0, 1e-9);
+    assert_close(kent_screening_effective_time(time, 1, late, 2, ROWS),
                  10.0 * (sqrt(0.9) - sqrt(0.1)) / 0.8, 1e-4);
 }
 
@@ -108,10 +108,10 @@ static void what_does_not_change_has_no_effective_time(void **state)
 {
     (void)state;
     const double time[] = {0.0, 1.0, 2.0}, flow[] = {0.3, 0.3, 0.3};
-    assert_true(isnan(kent_screening_effective_time(time, flow, 3, 1)));
-    assert_true(isnan(kent_screening_effective_time(time, flow, 0, 1)));
+    assert_true(isnan(kent_screening_effective_time(time, 1, flow, 1, 3)));
+    assert_true(isnan(kent_screening_effective_time(time, 1, flow, 1, 0)));
     const double sudden[] = {0.3, 0.0, 0.0};
-    assert_close(kent_screening_effective_time(time, sudden, 3, 1), 1.0, 1e-12);
+    assert_close(kent_screening_effective_time(time, 1, sudden, 1, 3), 1.0, 1e-12);
 }
 
 int main(void)

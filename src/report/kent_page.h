@@ -1,0 +1,36 @@
+/* Inside report/ only: what the parts of the printed results share. Each part prints
+ * one section, or nothing where there is nothing to say. */
+#ifndef KENT_PAGE_H
+#define KENT_PAGE_H
+
+#include "kent_report.h"
+#include "kent_table.h"
+
+/* What the parts of one printed report share. */
+typedef struct kent_page {
+    const kent_results *results;
+    const kent_model *model;
+    kent_system units;
+    bool wide;
+    size_t limit; /* columns of a line; 0: none */
+    size_t
+        *order; /* [fitting_count] what cannot be held first, then along the routes */
+    char (*letter)[4]; /* [fitting_count] of its note; "" none */
+    bool cut;          /* a name was cut short */
+    kent_text *out;
+} kent_page;
+
+/* A heading, the table under it, and the table is let go. Nothing where it is empty. */
+void kent_page_finish(kent_page *page, const char *heading, kent_table *t);
+
+/* A paragraph; words is let go. */
+void kent_page_say(kent_page *page, const char *lead, kent_text *words);
+
+void kent_page_limits(kent_page *page);    /* what was reached against what is asked */
+void kent_page_devices(kent_page *page);   /* extremes of devices, by scenario */
+void kent_page_cavities(kent_page *page);  /* the largest cavities, by scenario */
+void kent_page_twins(kent_page *page);     /* scenarios that repeat another's events */
+void kent_page_screening(kent_page *page); /* figures for a hand check */
+void kent_page_swings(kent_page *page);    /* how often plastics are swung, how far */
+
+#endif
