@@ -142,7 +142,7 @@ static void describe_knots(kent_cavities *c, double step, const kent_waves *w)
             .gas = water * gas_head(m),
         };
         hole->listed = water * KENT_CAVITY_LISTED;
-        c->knot_wakes[i] = 2.0 * (hole->hollow.limit + c->heights.wakes);
+        c->knot_wakes[i] = hole->hollow.limit + c->heights.wakes;
     }
 }
 
@@ -153,10 +153,9 @@ static double rise_at_knot(const kent_cavities *c, const kent_waves *w, size_t k
     return kent_waves_head(w, c->knot_node[knot]) - c->holes[knot].hollow.limit;
 }
 
-static bool knot_low(const kent_cavities *c, const kent_waves *w, size_t knot)
+static bool knot_low(const kent_cavities *c, size_t knot)
 {
-    const size_t node = c->knot_node[knot];
-    return w->p[node] + w->m[node] < c->knot_wakes[knot];
+    return c->ends->head[knot] < c->knot_wakes[knot];
 }
 
 /* Clusters come last. */
@@ -166,12 +165,13 @@ static size_t knots_alone(const kent_ends *e)
     return last && last->kind == KENT_END_CLUSTER ? last->first : e->knot_count;
 }
 
-static bool some_knot_low(const kent_cavities *c, const kent_waves *w)
+static bool some_knot_low(const kent_cavities *c)
 {
     const size_t count = knots_alone(c->ends);
-    int low = 0;
+    const double *head = c->ends->head, *wakes = c->knot_wakes;
+    int64_t low = 0; /* as wide as a head, for the compiler */
     for (size_t i = 0; i < count; i++) {
-        low |= knot_low(c, w, i);
+        low += head[i] < wakes[i] ? 1 : 0;
     }
     return low != 0;
 }
@@ -217,7 +217,7 @@ static bool wake_together(kent_cavities *c, const kent_waves *w, size_t first,
 {
     bool any = false;
     for (size_t i = first; i < first + count; i++) {
-        any = any || c->holes[i].awake || knot_low(c, w, i);
+        any = any || c->holes[i].awake || knot_low(c, i);
     }
     for (size_t i = first; any && i < first + count; i++) {
         wake_knot(c, i,
@@ -262,7 +262,7 @@ static double taken_at(const kent_cavities *c, const kent_waves *w, kent_end_kin
 
 static void solve_knots(kent_cavities *c, kent_waves *w, double time)
 {
-    if (c->awake_knots == 0 && !some_knot_low(c, w)) return;
+    if (c->awake_knots == 0 && !some_knot_low(c)) return;
     for (size_t r = 0; r < c->ends->run_count; r++) {
         const kent_run *run = &c->ends->runs[r];
         const size_t group = run->kind == KENT_END_VALVE ? 2 : 1;
@@ -455,39 +455,77 @@ void kent_cavities_solve(kent_cavities *c, kent_waves *w, double time)
 
 /* ---- sweep ----------------------------------------------------------------------- */
 
-static int64_t sweep_block(const kent_cavities *c, kent_waves *w, size_t block)
+/* What flows either way from the nodes of a piece, and its friction. */
+typedef struct kent_sides {
+    double gap[KENT_BLOCK], k[KENT_BLOCK]; /* m: 2 B Q, 15.8; 1/m */
+} kent_sides;
+
+static void take_sides(const kent_cavities *c, const kent_drag *drag,
+                       const kent_waves *w, const kent_piece *at, kent_sides *right,
+                       kent_sides *left)
 {
-    size_t count = 0;
-    const size_t first = kent_waves_block(w, block, &count);
-    const bool implicit = block >= w->explicit_blocks;
+    const size_t n = at->end - at->first;
+    const size_t span = (size_t)c->span_index[at->span - c->spans];
+    for (size_t j = 0; j < n; j++) {
+        const size_t i = at->first + j;
+        right->gap[j] = 2.0 * (c->head[i] - w->m[i]);
+        left->gap[j] = 2.0 * (w->p[i] - c->head[i]);
+        right->k[j] = left->k[j] = w->k[i];
+    }
+    kent_drag_follow(drag, span, n, right->gap, right->k);
+    kent_drag_follow(drag, span, n, left->gap, left->k);
+}
+
+static int64_t sweep_piece(const kent_cavities *c, const kent_drag *drag, kent_waves *w,
+                           const kent_piece *at)
+{
+    const bool implicit = at->first >= w->explicit_total;
     const double limit = implicit ? DBL_MAX : KENT_EXPLICIT_LIMIT;
+    kent_sides right, left;
     int64_t beyond = 0;
 
-    for (size_t i = first; i < first + count; i++) {
+    take_sides(c, drag, w, at, &right, &left);
+    for (size_t j = 0, i = at->first; i < at->end; i++, j++) {
         const double p = w->p[i], m = w->m[i], twice = 2.0 * c->head[i];
-        const double right = twice - 2.0 * m, left = 2.0 * p - twice; /* 2 B Q, 15.8 */
-        const double kr = w->k[i] * fabs(right), kl = w->k[i] * fabs(left);
+        const double kr = right.k[j] * fabs(right.gap[j]);
+        const double kl = left.k[j] * fabs(left.gap[j]);
         w->twice_highest[i] = fmax(w->twice_highest[i], twice);
         w->twice_lowest[i] = fmin(w->twice_lowest[i], twice);
         if (!(kr <= limit) || !(kl <= limit)) { /* for the marcher to find */
-            const double d = kr > kl ? right : left;
-            w->p[i] = 0.5 * (twice + d);
-            w->m[i] = 0.5 * (twice - d);
+            const kent_sides *worst = kr > kl ? &right : &left;
+            w->k[i] = worst->k[j];
+            w->p[i] = 0.5 * (twice + worst->gap[j]);
+            w->m[i] = 0.5 * (twice - worst->gap[j]);
             beyond++;
             continue;
         }
-        const double fr = kr * right, fl = kl * left;
+        const double fr = kr * right.gap[j], fl = kl * left.gap[j];
         w->p[i] = twice - m - (implicit ? fr / (1.0 + 2.0 * kr) : fr);
         w->m[i] = twice - p + (implicit ? fl / (1.0 + 2.0 * kl) : fl);
     }
     return beyond;
 }
 
-int64_t kent_cavities_sweep(const kent_cavities *c, kent_waves *w)
+static int64_t sweep_block(const kent_cavities *c, const kent_drag *drag, kent_waves *w,
+                           size_t block)
+{
+    size_t count = 0;
+    const size_t first = kent_waves_block(w, block, &count), end = first + count;
+    const kent_cavity_span *span = &c->spans[c->block_span[block]];
+    int64_t beyond = 0;
+    for (kent_piece at = {.end = first}; at.end < end; span++) {
+        at = next_piece(span, at.end, end);
+        beyond += sweep_piece(c, drag, w, &at);
+    }
+    return beyond;
+}
+
+int64_t kent_cavities_sweep(const kent_cavities *c, const kent_drag *drag,
+                            kent_waves *w)
 {
     int64_t beyond = 0;
     for (size_t b = 0; c->awake_blocks > 0 && b < w->block_total; b++) {
-        if (w->awake[b]) beyond += sweep_block(c, w, b);
+        if (w->awake[b]) beyond += sweep_block(c, drag, w, b);
     }
     return beyond;
 }

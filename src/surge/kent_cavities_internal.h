@@ -17,6 +17,7 @@
 #ifndef KENT_CAVITIES_INTERNAL_H
 #define KENT_CAVITIES_INTERNAL_H
 
+#include "kent_drag_internal.h"
 #include "kent_marcher.h"
 #include "kent_stands_internal.h"
 
@@ -69,7 +70,7 @@ typedef struct kent_cavities {
     kent_pocket *pockets;          /* [node_total] */
     kent_hole *holes;              /* [knot_count] */
     uint32_t *knot_node;           /* [knot_count] of its first tip */
-    double *knot_wakes;            /* [knot_count] m: twice the head that wakes it */
+    double *knot_wakes;            /* [knot_count] m: the head that wakes it */
     size_t awake_blocks, awake_knots; /* knots of clusters not counted */
 } kent_cavities;
 
@@ -83,8 +84,9 @@ void kent_cavities_free(kent_cavities *c);
 void kent_cavities_solve(kent_cavities *c, kent_waves *w, double time);
 
 /* Friction and envelopes of the blocks that are awake, before kent_waves_sweep. Returns
- * how many nodes were beyond the limit and left as they were. */
-int64_t kent_cavities_sweep(const kent_cavities *c, kent_waves *w);
+ * how many nodes were beyond the limit; they keep the flow that was. */
+int64_t kent_cavities_sweep(const kent_cavities *c, const kent_drag *drag,
+                            kent_waves *w);
 
 /* What leaves an awake node adds up to more than twice its head where its cavity grows.
  * Whoever reads heads out of p + m after the sweep wants show before and hide after. */

@@ -63,35 +63,41 @@ static void send_back(const kent_tip *tip, size_t count, double head, kent_line 
 static void solve_dead(const kent_ends *e, const kent_run *run, kent_line line)
 {
     const kent_tip *tip = e->tips + e->knots[run->first].tip_first;
+    double *head = e->head + run->first;
     for (size_t i = 0; i < run->count; i++) {
-        line[tip[i].side ^ 1U][tip[i].node] = line[tip[i].side][tip[i].node];
+        head[i] = line[tip[i].side][tip[i].node];
+        line[tip[i].side ^ 1U][tip[i].node] = head[i];
     }
 }
 
 /* Inlined with a constant number of tips where most junctions are. */
-static inline __attribute__((always_inline)) void
-solve_alike(const kent_tip *tip, size_t tips, size_t count, kent_line line)
+static inline __attribute__((always_inline)) void solve_alike(const kent_tip *tip,
+                                                              size_t tips, size_t count,
+                                                              double *restrict head,
+                                                              kent_line line)
 {
     for (size_t i = 0; i < count; i++, tip += tips) {
-        send_back(tip, tips, arriving(tip, tips, line), line);
+        head[i] = arriving(tip, tips, line);
+        send_back(tip, tips, head[i], line);
     }
 }
 
 static void solve_junction(const kent_ends *e, const kent_run *run, kent_line line)
 {
     const kent_tip *tip = e->tips + e->knots[run->first].tip_first;
+    double *head = e->head + run->first;
     switch (run->tip_count) {
     case 2:
-        solve_alike(tip, 2, run->count, line);
+        solve_alike(tip, 2, run->count, head, line);
         break;
     case 3:
-        solve_alike(tip, 3, run->count, line);
+        solve_alike(tip, 3, run->count, head, line);
         break;
     case 4:
-        solve_alike(tip, 4, run->count, line);
+        solve_alike(tip, 4, run->count, head, line);
         break;
     default:
-        solve_alike(tip, run->tip_count, run->count, line);
+        solve_alike(tip, run->tip_count, run->count, head, line);
     }
 }
 
@@ -101,8 +107,9 @@ static void solve_fixed_level(const kent_ends *e, const kent_run *run, kent_line
         const kent_knot *j = &e->knots[run->first + i];
         const kent_tip *tip = e->tips + j->tip_first;
         const double c = arriving(tip, j->tip_count, line);
-        send_back(tip, j->tip_count,
-                  kent_level_head(&e->levels[j->device], c, j->admittance), line);
+        double *head = &e->head[run->first + i];
+        *head = kent_level_head(&e->levels[j->device], c, j->admittance);
+        send_back(tip, j->tip_count, *head, line);
     }
 }
 
@@ -112,8 +119,9 @@ static void solve_outflow(const kent_ends *e, const kent_run *run, kent_line lin
         const kent_knot *j = &e->knots[run->first + i];
         const kent_tip *tip = e->tips + j->tip_first;
         const double c = arriving(tip, j->tip_count, line);
-        send_back(tip, j->tip_count,
-                  kent_draw_head(&e->draws[j->device], c, j->admittance), line);
+        double *head = &e->head[run->first + i];
+        *head = kent_draw_head(&e->draws[j->device], c, j->admittance);
+        send_back(tip, j->tip_count, *head, line);
     }
 }
 
@@ -126,7 +134,9 @@ static void solve_discharge(const kent_ends *e, const kent_run *run, kent_line l
         const double c = arriving(tip, j->tip_count, line);
         const double flow =
             kent_gate_flow(gate->capacity, c - gate->level, 1.0 / j->admittance);
-        send_back(tip, j->tip_count, c - flow / j->admittance, line);
+        double *head = &e->head[run->first + i];
+        *head = c - flow / j->admittance;
+        send_back(tip, j->tip_count, *head, line);
     }
 }
 
@@ -139,8 +149,11 @@ static void solve_valve(const kent_ends *e, const kent_run *run, kent_line line)
         const double c_b = arriving(tip_b, b->tip_count, line);
         const double flow = kent_gate_flow(e->gates[a->device].capacity, c_a - c_b,
                                            1.0 / a->admittance + 1.0 / b->admittance);
-        send_back(tip_a, a->tip_count, c_a - flow / a->admittance, line);
-        send_back(tip_b, b->tip_count, c_b + flow / b->admittance, line);
+        double *head = &e->head[run->first + i];
+        head[0] = c_a - flow / a->admittance;
+        head[1] = c_b + flow / b->admittance;
+        send_back(tip_a, a->tip_count, head[0], line);
+        send_back(tip_b, b->tip_count, head[1], line);
     }
 }
 
@@ -342,11 +355,13 @@ kent_status kent_ends_new(const kent_model *m, const kent_steady *s,
     }
     e->tips = kent_alloc(2 * m->span_count, sizeof *e->tips);
     e->knots = kent_alloc(m->node_count, sizeof *e->knots);
+    e->head = kent_alloc(m->node_count, sizeof *e->head);
     e->runs = kent_alloc(KENT_END_KINDS * most + 1, sizeof *e->runs);
     e->levels = kent_alloc(m->fixed_level_count, sizeof *e->levels);
     e->draws = kent_alloc(m->outflow_count, sizeof *e->draws);
     e->gates = kent_alloc(m->valve_count, sizeof *e->gates);
-    if (!e->tips || !e->knots || !e->runs || !e->levels || !e->draws || !e->gates) {
+    if (!e->tips || !e->knots || !e->head || !e->runs || !e->levels || !e->draws ||
+        !e->gates) {
         goto done;
     }
     describe_devices(e, m, s);
@@ -372,6 +387,7 @@ void kent_ends_free(kent_ends *e)
     if (!e) return;
     free(e->tips);
     free(e->knots);
+    free(e->head);
     free(e->runs);
     free(e->levels);
     free(e->draws);

@@ -68,6 +68,8 @@ typedef struct kent_stands kent_stands; /* kent_stands_internal.h */
 typedef struct kent_ends {
     kent_tip *tips;
     kent_knot *knots;
+    double
+        *head; /* [knot_count] m: of the instant solved last, but those of clusters */
     kent_run *runs;
     size_t tip_count, knot_count, run_count;
     kent_level *levels;

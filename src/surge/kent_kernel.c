@@ -12,7 +12,7 @@
         double *restrict m, double *restrict highest, double *restrict lowest)         \
     {                                                                                  \
         return (int64_t)n -                                                            \
-               kent_kernel_body(n, limit, 0, k, p, m, highest, lowest, NULL, NULL);    \
+               kent_kernel_body(n, limit, 0, k, p, m, highest, lowest, NULL);          \
     }                                                                                  \
     attribute static int64_t explicit_watch_##level(                                   \
         size_t n, double limit, const double *restrict k, double *restrict p,          \
@@ -26,7 +26,7 @@
         double *restrict m, double *restrict highest, double *restrict lowest)         \
     {                                                                                  \
         return (int64_t)n -                                                            \
-               kent_kernel_body(n, limit, 1, k, p, m, highest, lowest, NULL, NULL);    \
+               kent_kernel_body(n, limit, 1, k, p, m, highest, lowest, NULL);          \
     }                                                                                  \
     attribute static int64_t implicit_watch_##level(                                   \
         size_t n, double limit, const double *restrict k, double *restrict p,          \

@@ -40,14 +40,15 @@ typedef int64_t kent_sweep(size_t n, double limit, const double *restrict k,
                            double *restrict p, double *restrict m,
                            double *restrict highest, double *restrict lowest);
 
-enum { KENT_BLOCK = 64 }; /* nodes, but for a last one that may have less */
+enum { KENT_BLOCK = 128 }; /* nodes, but for a last one that may have less */
 
 typedef struct kent_floor { /* m */
     double p, m;
 } kent_floor;
 
 /* The same for n nodes that are whole blocks from the first on; p[-1] and m[n] are
- * there to be read. low[block] is set to 1 where its floor was crossed, else left. */
+ * there to be read. low[block] is set to 1 where its floor was crossed
+ * or a node was beyond the limit, else left. */
 typedef int64_t kent_watching_sweep(size_t n, double limit, const double *restrict k,
                                     double *restrict p, double *restrict m,
                                     double *restrict highest, double *restrict lowest,
@@ -69,15 +70,15 @@ kent_status kent_kernel_pick(const char *wanted, const kent_kernel **out,
 /* NOLINTBEGIN(readability-function-size): arrays that restrict must name */
 
 /* One body for every instruction set: each caller compiles it for its own. floor NULL:
- * nothing is watched. Returns the number of nodes within the limit; in *below, of those
- * below the floor. */
+ * nothing is watched. Returns the number of nodes within the limit and above the floor:
+ * one count costs less than two. */
 static inline __attribute__((always_inline)) int64_t
 kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
                  double *restrict p, double *restrict m, double *restrict highest,
-                 double *restrict lowest, const kent_floor *floor, int64_t *below)
+                 double *restrict lowest, const kent_floor *floor)
 {
     const double floor_p = floor ? floor->p : 0.0, floor_m = floor ? floor->m : 0.0;
-    int64_t within = 0, under = 0;
+    int64_t well = 0;
     for (size_t i = 0; i < n; i++) {
         const double twice_head = p[i] + m[i];
         const double d = p[i] - m[i];
@@ -85,14 +86,25 @@ kent_kernel_body(size_t n, double limit, int implicit, const double *restrict k,
         const double drag = implicit ? kd * d / (1.0 + 2.0 * kd) : kd * d;
         const double f = kd <= limit ? drag : 0.0;
         const double right = p[i] - f, left = m[i] + f;
-        within += kd <= limit ? 1 : 0; /* NaN is not */
+        const bool high = !floor || ((right >= floor_p) & (left >= floor_m));
+        well += (kd <= limit) & high; /* NaN is not */
         highest[i] = twice_head > highest[i] ? twice_head : highest[i];
         lowest[i] = twice_head < lowest[i] ? twice_head : lowest[i];
         p[i] = right;
         m[i] = left;
-        if (floor) under += (right < floor_p) | (left < floor_m);
     }
-    if (floor) *below = under;
+    return well;
+}
+
+/* Nodes within the limit after a sweep: it only lessens k|d|, and leaves be what is
+ * beyond. */
+static inline int64_t kent_kernel_within(size_t n, double limit, const double *k,
+                                         const double *p, const double *m)
+{
+    int64_t within = 0;
+    for (size_t i = 0; i < n; i++) {
+        within += k[i] * fabs(p[i] - m[i]) <= limit;
+    }
     return within;
 }
 
@@ -107,13 +119,15 @@ kent_kernel_blocks(size_t n, double limit, int implicit, const double *restrict 
     for (size_t i = 0, block = 0; i < n; i += KENT_BLOCK, block++) {
         const size_t count = n - i < KENT_BLOCK ? n - i : KENT_BLOCK;
         const kent_floor floor = floors[block];
-        int64_t below = 0;
-        within += count == KENT_BLOCK /* a constant makes whole vectors of it */
-                      ? kent_kernel_body(KENT_BLOCK, limit, implicit, k + i, p + i,
-                                         m + i, highest + i, lowest + i, &floor, &below)
-                      : kent_kernel_body(count, limit, implicit, k + i, p + i, m + i,
-                                         highest + i, lowest + i, &floor, &below);
-        low[block] |= (below != 0) | (p[(ptrdiff_t)i - 1] < floor.p);
+        const int64_t well =
+            count == KENT_BLOCK /* a constant makes whole vectors of it */
+                ? kent_kernel_body(KENT_BLOCK, limit, implicit, k + i, p + i, m + i,
+                                   highest + i, lowest + i, &floor)
+                : kent_kernel_body(count, limit, implicit, k + i, p + i, m + i,
+                                   highest + i, lowest + i, &floor);
+        const bool all = well == (int64_t)count;
+        within += all ? well : kent_kernel_within(count, limit, k + i, p + i, m + i);
+        low[block] |= !all | (p[(ptrdiff_t)i - 1] < floor.p);
         if (block > 0) low[block - 1] |= m[i] < floors[block - 1].m;
     }
     if (n > 0) {

@@ -230,7 +230,8 @@ static bool advance_once(kent_marcher *k)
 {
     kent_recall_pull(k->recall, k->kernel, k->waves);
     kent_drag_refresh(k->drag, k->waves);
-    int64_t beyond = k->cavities ? kent_cavities_sweep(k->cavities, k->waves) : 0;
+    int64_t beyond =
+        k->cavities ? kent_cavities_sweep(k->cavities, k->drag, k->waves) : 0;
     beyond += kent_waves_sweep(k->waves, k->kernel);
     if (beyond != 0) {
         stop(k); /* which finds the culprits where they are */

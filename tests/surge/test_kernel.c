@@ -7,7 +7,7 @@
 #include <stdbool.h>
 #include <string.h>
 
-enum { N = 203 }; /* no multiple of any vector */
+enum { N = 3 * KENT_BLOCK + 11 }; /* no multiple of any vector */
 
 typedef struct nodes {
     double k[N], p[N], m[N], highest[N], lowest[N];
@@ -77,15 +77,16 @@ static void every_kernel_gives_the_same_bits(void **state)
 }
 
 /* A watching sweep leaves the same numbers, and marks just the blocks that a p or an m
- * below the floor comes from or goes to. */
+ * below the floor comes from or goes to, and those that would stop the march. */
 static void a_watching_sweep_marks_what_may_be_low(void **state)
 {
     (void)state;
     enum { BLOCKS = (N + KENT_BLOCK - 1) / KENT_BLOCK };
     static const char *const level[] = {"base", "avx2", "avx512"};
-    for (int i = 0; i < 6; i++) {
+    for (int i = 0; i < 12; i++) {
         const bool implicit = i % 2 == 1;
-        const kent_kernel *kernel = pick(level[i / 2]);
+        const double limit = i < 6 ? 1e9 : 0.02; /* none and some beyond it */
+        const kent_kernel *kernel = pick(level[i / 2 % 3]);
         if (!kernel) continue;
         nodes want = some_nodes(), got = some_nodes();
         double p[N + 2] = {1e9}, m[N + 2] = {0.0}; /* room for the neighbours */
@@ -93,20 +94,22 @@ static void a_watching_sweep_marks_what_may_be_low(void **state)
         kent_floor floors[BLOCKS];
         const int64_t beyond =
             (implicit ? kernel->implicit_sweep : kernel->explicit_sweep)(
-                N, 0.02, want.k, want.p, want.m, want.highest, want.lowest);
+                N, limit, want.k, want.p, want.m, want.highest, want.lowest);
         memcpy(p + 1, got.p, sizeof got.p);
         memcpy(m, got.m, sizeof got.m);
         m[N] = 1e9;
         for (int b = 0; b < BLOCKS; b++) {
             floors[b] = (kent_floor){-1e9, -1e9};
         }
-        floors[1].p = want.p[70] + 1e-9; /* one inside */
-        floors[2].p = want.p[127];       /* one over its edge, but not below */
-        floors[2].m = want.m[192] + 1e-9;
+        floors[1].p = want.p[KENT_BLOCK + 6] + 1e-9; /* one inside */
+        floors[2].p = want.p[2 * KENT_BLOCK - 1];    /* one over its edge, not below */
+        floors[2].m = want.m[3 * KENT_BLOCK] + 1e-9;
         for (int b = 0; b < BLOCKS; b++) {
             for (int n = KENT_BLOCK * b - 1; n <= KENT_BLOCK * (b + 1); n++) {
                 const bool inside = n >= KENT_BLOCK * b && n < KENT_BLOCK * (b + 1);
                 if (n < 0 || n >= N) continue;
+                if (inside && want.k[n] * fabs(want.p[n] - want.m[n]) > limit)
+                    mark[b] = 1;
                 if ((inside || n < KENT_BLOCK * b) && want.p[n] < floors[b].p)
                     mark[b] = 1;
                 if ((inside || n > KENT_BLOCK * b) && want.m[n] < floors[b].m)
@@ -116,9 +119,9 @@ static void a_watching_sweep_marks_what_may_be_low(void **state)
         assert_true(
             beyond ==
             (implicit ? kernel->implicit_watch : kernel->explicit_watch)(
-                N, 0.02, got.k, p + 1, m, got.highest, got.lowest, floors, low));
+                N, limit, got.k, p + 1, m, got.highest, got.lowest, floors, low));
         assert_memory_equal(low, mark, sizeof low);
-        assert_true(low[1] == 1 && low[2] == 1 && low[0] == 0);
+        assert_true(low[1] == 1 && low[2] == 1 && low[0] == (i < 6 ? 0 : 1));
         assert_memory_equal(p + 1, want.p, sizeof want.p);
         assert_memory_equal(m, want.m, sizeof want.m);
         assert_memory_equal(got.highest, want.highest, sizeof want.highest);

@@ -129,11 +129,66 @@ static void an_air_valve_and_a_cavity_share_a_node(void **state)
     }
 }
 
+/* ---- friction beside a cavity ---------------------------------------------------- */
+
+/* Levels at both ends of a hill fall alike, and the water parts at its top: what flows
+ * to the left is what flows to the right, and their mean is nil, at which the friction
+ * factor of a laminar flow knows no bound. Each side has the friction of its own flow:
+ * in a main so short next to none. */
+static double parts_at_the_top(kent_surge_friction kind, kent_separation separation)
+{
+    static const kent_law_point law[] = {{0.0, 40.0}, {6.0, 2.0}};
+    kent_build b = kent_build_new();
+    kent_build_point(&b, "A", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "K", 500.0, 0.0, 30.0);
+    kent_build_point(&b, "B", 1000.0, 0.0, 0.0);
+    kent_build_pipe(&b, "1", "A K B", 0.5, 1000.0);
+    b.model->pipes[0].length = 1000.0;
+    for (int i = 0; i < 2; i++) {
+        kent_build_fixed_level(&b, i == 0 ? "A" : "B", 40.0);
+    }
+    set_friction(b.model, kind);
+    const int s = kent_build_scenario(&b, "fall", 60.0);
+    kent_build_law(&b, s, KENT_EVENT_FIXED_LEVEL, 0, 0.5, law, 2);
+    kent_build_law(&b, s, KENT_EVENT_FIXED_LEVEL, 1, 0.5, law, 2);
+    b.model->solver.time_step = 0.02;
+    b.model->solver.column_separation = separation;
+    const kent_watch at[] = {{0, 499.99}, {0, 500.01}};
+    march m = march_new(&b, 60.0, 0, at, 2, 1);
+    kent_trace t;
+    kent_error err = {0};
+    double largest = 0.0;
+    for (int i = 0; i < 500; i++) {
+        double hollow[MOST];
+        if (kent_marcher_advance(m.marcher, 1, &t, &err) != 1) fail_msg("%s", err.what);
+        assert_within(t.flow[0], -t.flow[1], 1e-9);
+        kent_marcher_hollow(m.marcher, 0, hollow);
+        largest = fmax(largest, hollow[m.grid->reaches[0] / 2]);
+    }
+    march_clear(&m);
+    kent_build_clear(&b);
+    return largest;
+}
+
+static void either_side_of_a_cavity_has_its_own_friction(void **state)
+{
+    (void)state;
+    for (int gas = 0; gas < 2; gas++) {
+        const kent_separation by = gas ? KENT_SEPARATION_GAS : KENT_SEPARATION_VAPOUR;
+        const double none = parts_at_the_top(KENT_SURGE_NONE, by);
+        assert_true(none > 0.01);
+        assert_close(parts_at_the_top(KENT_SURGE_CONSTANT, by), none, 0.1);
+        assert_close(parts_at_the_top(KENT_SURGE_QUASI_STEADY, by), none, 0.1);
+        assert_close(parts_at_the_top(KENT_SURGE_UNSTEADY, by), none, 0.1);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_pump_trips_and_the_summit_parts),
         cmocka_unit_test(an_air_valve_and_a_cavity_share_a_node),
+        cmocka_unit_test(either_side_of_a_cavity_has_its_own_friction),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
