@@ -149,6 +149,10 @@ static void check_change(kent_filling *f, kent_record *record, const kent_event 
     } else if (!law && e->kind == KENT_EVENT_VALVE && !to->bare) {
         kent_record_complain(r, record, "to",
                              "to is a flow where an opening from 0.0 to 1.0 belongs");
+    } else if (!law && e->kind == KENT_EVENT_VALVE && to->number > 1.0) {
+        kent_record_complain(r, record, "to",
+                             "to = %.9g is out of range; the range is 0 to 1",
+                             to->number);
     } else if (!law && e->kind == KENT_EVENT_OUTFLOW && to->bare) {
         kent_record_complain(r, record, "to",
                              "to = %.9g has no unit; an outflow changes to a flow, for "
@@ -193,7 +197,7 @@ static void fill_pump_event(kent_filling *f, kent_record *record, kent_event *e)
     } else if (to->twig && !to->bare) {
         kent_record_complain(r, record, "to",
                              "to is a flow where a share of the rated speed from 0.0 "
-                             "to 1.0 belongs");
+                             "to 1.5 belongs");
     } else if (e->target >= 0 && e->how_many > f->model->pumps[e->target].in_parallel) {
         kent_record_complain(r, record, "how_many",
                              "how_many = %d is more than the %d in_parallel",

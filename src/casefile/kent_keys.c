@@ -346,7 +346,7 @@ const kent_key KENT_KEYS[] = {
              "when the change starts"),
     QUANTITY("event", "ramp_time", KENT_TIME, WITHIN(0.0, 1e6), "none",
              "time the change takes"),
-    EITHER("event", "to", KENT_FLOW, WITHIN(0.0, 1.0), "none",
+    EITHER("event", "to", KENT_FLOW, WITHIN(0.0, 1.5), "none",
            "opening or share of the rated speed (a number), or flow (with unit) at the "
            "end of the change"),
     LIST("event", "opening_law", "", "none",

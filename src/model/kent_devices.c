@@ -333,49 +333,6 @@ bool kent_fitting_shuts(const kent_model *m, const kent_fitting *f, size_t port)
     return m->spans[p->span].node[p->sign > 0.0 ? 0 : 1] == d->node[1];
 }
 
-static bool has_fitting(const kent_model *m, int point)
-{
-    for (size_t f = 0; f < m->fitting_count; f++) {
-        if (m->fittings[f].point == point) return true;
-    }
-    return false;
-}
-
-static bool starts_pumps(const kent_model *m)
-{
-    for (size_t i = 0; i < m->event_count; i++) {
-        const kent_event *e = &m->events[i];
-        if (e->kind == KENT_EVENT_PUMP && e->action == KENT_START) return true;
-    }
-    return false;
-}
-
-void kent_devices_caution(kent_model *m)
-{
-    kent_text names = {0};
-    if (starts_pumps(m)) {
-        kent_notes_add(&m->cautions,
-                       "pumps start: the main is taken to be full of water; filling an "
-                       "empty line and starting on one that has partly drained are "
-                       "outside the method");
-    }
-    for (size_t i = 0; i < m->device_count; i++) {
-        const kent_device *d = &m->devices[i];
-        if (d->kind != KENT_DEVICE_PUMP || has_fitting(m, d->point)) continue;
-        kent_text_add(&names, "%s%s", names.length > 0 ? ", " : "", d->id);
-    }
-    if (names.length > 0) {
-        kent_notes_add(&m->cautions,
-                       "pumps (%s) are no fittings: what the water pushes them with is "
-                       "for their own foundation; a note in fittings of type "
-                       "\"dead-end\" at the start of a pipe, or \"valve\" in line, "
-                       "gives it",
-                       kent_text_of(&names));
-    }
-    m->cautions.failed = m->cautions.failed || names.failed;
-    kent_text_clear(&names);
-}
-
 int kent_model_device_index(const kent_model *m, const char *id)
 {
     for (size_t i = 0; i < m->device_count; i++) {

@@ -65,6 +65,7 @@ static void clear_derived(kent_model *m)
     free(m->members);
     free(m->marches);
     free(m->highest_level);
+    free(m->shut_off_level);
     m->chainage = m->station = m->station_on = NULL;
     m->zone_first = NULL;
     m->zone_order = NULL;
@@ -77,7 +78,7 @@ static void clear_derived(kent_model *m)
     m->fittings = NULL;
     m->members = NULL;
     m->marches = NULL;
-    m->highest_level = NULL;
+    m->highest_level = m->shut_off_level = NULL;
     m->span_count = m->node_count = m->port_count = m->fitting_count = 0;
     m->member_count = m->march_count = m->device_count = m->stand_count = 0;
 }
@@ -190,9 +191,10 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints)
     if (status != KENT_OK) goto done;
     status = kent_group_fittings(m, &layout, complaints);
     if (status != KENT_OK) goto done;
-    kent_devices_caution(m);
     status = kent_state_marches(m, complaints);
+    if (status == KENT_OK) kent_devices_caution(m);
     if (status == KENT_OK) status = kent_state_levels(m);
+    if (status == KENT_OK) status = kent_shut_off_levels(m);
     if (status == KENT_OK && m->cautions.failed) status = KENT_E_NOMEM;
 done:
     if (status == KENT_OK && complaints->count > before) status = KENT_E_INPUT;

@@ -816,8 +816,11 @@ typedef struct kent_model {
     size_t member_count;
     kent_march *marches; /* [march_count] by scenario, then state: what is marched */
     size_t march_count;
-    double *highest_level; /* [node_count] m: of all fixed levels in all states that it
-                              is connected to with every valve open; NAN: none */
+    double *highest_level;  /* [node_count] m: of all fixed levels in all states that it
+                               is connected to with every valve open; NAN: none */
+    double *shut_off_level; /* [node_count] m: that pumps raise still water to, valves
+                               shut behind it; NAN: none reaches it, or it is a fixed
+                               level */
 } kent_model;
 
 /* With nothing given: NAN, -1, no branch, no derating, every bearing by one value. */
@@ -906,6 +909,10 @@ double kent_model_station_at(const kent_model *m, int pipe, double chainage);
 /* m: level of the water at a node where nothing flows: the one stated, else the highest
  * connected level of any state. NAN: none. */
 double kent_static_level(const kent_model *m, int node);
+
+/* m: level that pumps at no flow raise the water of a span to, each on what it draws
+ * from (9.15). NAN: none reaches it. */
+double kent_shut_off_level(const kent_model *m, int span);
 
 /* Pa gauge, from a piezometric head (m) at a level (m). */
 double kent_model_pressure(const kent_model *m, double head, double level);

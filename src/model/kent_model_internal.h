@@ -110,7 +110,8 @@ void kent_devices_place(const kent_model *m, kent_layout *l,
 kent_arm kent_device_delivery(const kent_model *m, const kent_layout *l,
                               const kent_device *d);
 void kent_devices_stand(kent_model *m, const kent_layout *l);
-void kent_devices_caution(kent_model *m); /* once fittings are listed */
+/* kent_devices_caution.c: once fittings and marches are listed. */
+void kent_devices_caution(kent_model *m);
 
 /* kent_devices_valid.c: as kent_model_is_valid, of devices and what moves them. */
 bool kent_devices_are_valid(const kent_model *m);
@@ -126,6 +127,9 @@ kent_status kent_network_check_connected(const kent_model *m,
  * kent_model.highest_level. */
 kent_status kent_state_marches(kent_model *m, kent_complaints *complaints);
 kent_status kent_state_levels(kent_model *m);
+
+/* kent_shut_off.c: kent_model.shut_off_level, after highest_level. */
+kent_status kent_shut_off_levels(kent_model *m);
 
 /* kent_span.c: bore, friction, wave speed and share of losses from its pipe. */
 void kent_span_fill(const kent_model *m, kent_span *span);

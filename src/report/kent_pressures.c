@@ -30,8 +30,9 @@ static kent_pressure column_of(const kent_load_case *c)
     case KENT_CASE_TEST:
         return KENT_PRESSURE_TEST;
     case KENT_CASE_STATIC:
-    case KENT_CASE_SHUT_OFF:
         return KENT_PRESSURE_STATIC;
+    case KENT_CASE_SHUT_OFF:
+        return KENT_PRESSURE_SHUT_OFF;
     case KENT_CASE_STEADY:
         return KENT_PRESSURE_STEADY;
     case KENT_CASE_SUCTION:
@@ -70,11 +71,9 @@ kent_pressures kent_pressures_of(const kent_results *r, size_t fitting)
     static const struct {
         const char *name;
         kent_pressure column;
-    } NAMED[] = {{"steady", KENT_PRESSURE_STEADY},
-                 {"static", KENT_PRESSURE_STATIC},
-                 {"test", KENT_PRESSURE_TEST},
-                 {"future", KENT_PRESSURE_FUTURE},
-                 {"given", KENT_PRESSURE_GIVEN}};
+    } NAMED[] = {{"steady", KENT_PRESSURE_STEADY},     {"static", KENT_PRESSURE_STATIC},
+                 {"shut-off", KENT_PRESSURE_SHUT_OFF}, {"test", KENT_PRESSURE_TEST},
+                 {"future", KENT_PRESSURE_FUTURE},     {"given", KENT_PRESSURE_GIVEN}};
     const kent_fitting *f = &r->model->fittings[fitting];
     const kent_fitting_loads *loads = &r->loads->fittings[fitting];
     const kent_holding *h = &r->restraints->fittings[fitting];

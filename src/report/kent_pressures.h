@@ -10,6 +10,7 @@
 typedef enum kent_pressure {
     KENT_PRESSURE_STEADY,
     KENT_PRESSURE_STATIC,
+    KENT_PRESSURE_SHUT_OFF, /* where there are pumps */
     KENT_PRESSURE_TEST,
     KENT_PRESSURE_FUTURE, /* where the case expects one */
     KENT_PRESSURE_HIGHEST,

@@ -262,9 +262,16 @@ static bool is_static(const kent_load_case *c)
     return c->scenario < 0 && c->kind == KENT_CASE_STATIC;
 }
 
+static const char *equation_of(const kent_load_case *c)
+{
+    if (c->scenario < 0 && c->kind == KENT_CASE_SHUT_OFF) return "9.15";
+    return is_static(c) ? "9.2" : "9.3";
+}
+
 static const char *head_words(const kent_model *m, const kent_load_case *c)
 {
     if (c->scenario >= 0) return "head at that instant";
+    if (c->kind == KENT_CASE_SHUT_OFF) return "level of pumps at no flow";
     if (!is_static(c)) return "head of the steady state";
     return isnan(m->loads.static_level) ? "highest level connected"
                                         : "static level stated";
@@ -303,7 +310,7 @@ static void derive_case_pressure(const kent_sheet *s, const kent_load_case *c,
     (void)snprintf(formula, sizeof formula, "rho*g*(%s-z)",
                    case_symbol("H", index).text);
     kent_derivation_work(d, case_symbol("p", index).text, p, KENT_PRESSURE, formula,
-                         is_static(c) ? "9.2" : "9.3", "pressure at the centre");
+                         equation_of(c), "pressure at the centre");
 }
 
 /* Each case of a fitting in a network by arithmetic: pressure, thrust, factored. */

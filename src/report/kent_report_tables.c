@@ -358,9 +358,11 @@ static bool has_ratings(const kent_page *page, kent_rating rating)
     return false;
 }
 
-static bool has_future(const kent_page *page)
+/* Whether a column stands for anything in this case. */
+static bool has_column(const kent_page *page, int column)
 {
-    return !isnan(page->model->loads.future_pressure);
+    if (column == KENT_PRESSURE_SHUT_OFF) return page->model->pump_count > 0;
+    return column != KENT_PRESSURE_FUTURE || !isnan(page->model->loads.future_pressure);
 }
 
 static void pressure_row(const kent_page *page, size_t i, kent_table *t)
@@ -368,7 +370,7 @@ static void pressure_row(const kent_page *page, size_t i, kent_table *t)
     const kent_pressures p = kent_pressures_of(page->results, i);
     kent_table_cell(t, "%s", page->model->fittings[i].id);
     for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
-        if (k == KENT_PRESSURE_FUTURE && !has_future(page)) continue;
+        if (!has_column(page, k)) continue;
         const kent_shown number =
             kent_shown_quantity(KENT_PRESSURE, page->units, p.at[k]);
         kent_table_cell(t, "%s%s", number.text, k == p.governs ? "*" : " ");
@@ -385,7 +387,7 @@ static void print_pressures(kent_page *page)
 {
     const kent_shown unit = kent_shown_unit(KENT_PRESSURE, page->units);
     const char *bar = unit.text;
-    static const char *const HEADS[] = {"steady ", "static ",  "test ",
+    static const char *const HEADS[] = {"steady ", "static ",  "shut-off ", "test ",
                                         "future ", "highest ", "lowest "};
     static const char *const RATED[KENT_RATINGS] = {"rating ", "+surge ", "+often ",
                                                     "tested "};
@@ -396,7 +398,7 @@ static void print_pressures(kent_page *page)
         columns[k] = (kent_column){"", bar, KENT_ALIGN_RIGHT, false};
     }
     for (int k = 0; k <= KENT_PRESSURE_LOWEST; k++) {
-        if (k == KENT_PRESSURE_FUTURE && !has_future(page)) continue;
+        if (!has_column(page, k)) continue;
         columns[t.column_count++].head = HEADS[k];
     }
     columns[t.column_count++].head = RATED[KENT_RATING_SERVICE];

@@ -241,6 +241,9 @@ void kent_view_loads(const kent_view *v)
         kent_text_add(&words, "Still water at %s, as given. ",
                       said(v, KENT_LENGTH, l->static_level, &s));
     }
+    if (v->model->pump_count > 0) {
+        kent_text_add(&words, "Pumps at no flow, valves shut, as far as they reach. ");
+    }
     if (isfinite(l->future_pressure)) {
         kent_text_add(&words, "Later %s at %s. ",
                       said(v, KENT_PRESSURE, l->future_pressure, &s),

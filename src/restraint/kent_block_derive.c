@@ -192,21 +192,25 @@ static void derive_gravity(const kent_holding_work *w, kent_holding *h)
     const double up = w->demand.load[KENT_UPWARD];
     const double down = w->demand.load[KENT_DOWNWARD];
 
-    kent_derivation_heading(d, "Weight for the upward thrust");
+    const bool lifts = up > 0.0;
+
+    kent_derivation_heading(d, lifts ? "Weight for the upward thrust"
+                                     : "Footing for the downward thrust");
     derive_depth(w, h);
-    const bool wet = derive_concrete(w, h);
+    const bool wet = lifts && derive_concrete(w, h);
     const double unit_weight =
         r->concrete_unit_weight - (wet ? r->water_unit_weight : 0.0);
-    kent_derivation_work(d, "V0", kent_gravity_volume(up, 1.0, unit_weight),
-                         KENT_VOLUME, wet ? "Fup/gb" : "Fup/gc", "10.13",
-                         "concrete that weighs as much");
+    const double volume = kent_gravity_volume(up, 1.0, unit_weight);
+    if (lifts) {
+        kent_derivation_work(d, "V0", volume, KENT_VOLUME, wet ? "Fup/gb" : "Fup/gc",
+                             "10.13", "concrete that weighs as much");
+    }
     if (down > 0.0) {
         kent_derivation_put(d, "qv", w->site.vertical, KENT_STRESS,
                             kent_soil_source(w->soil), "bearing under a base");
         kent_derivation_work(d, "A0", down / w->site.vertical, KENT_AREA, "Fdn/qv",
                              "10.16", "area that carries the downward thrust");
     }
-    const double volume = kent_gravity_volume(up, 1.0, unit_weight);
     const bool shallow = kent_gravity_shallow(r, &w->site, volume) > cbrt(volume);
     if (shallow) {
         kent_derivation_work(d, "top", kent_gravity_most(r, &w->site), KENT_LENGTH,
@@ -214,18 +218,21 @@ static void derive_gravity(const kent_holding_work *w, kent_holding *h)
                              "10.15", "height at which it would reach the ground");
     }
     kent_derivation_work(d, "a", b->width, KENT_LENGTH,
-                         GRAVITY_SIDE[shallow][down > 0.0], "10.14",
-                         "side of a square plan");
+                         lifts ? GRAVITY_SIDE[shallow][down > 0.0] : UP("sqrt(A0)"),
+                         "10.14", "side of a square plan");
     rule(d, "hmin", r->least_height, KENT_LENGTH, "least height");
-    kent_derivation_work(d, "hg", b->height, KENT_LENGTH, UP("max(V0/(a*a), hmin)"),
-                         "10.15", "height");
+    kent_derivation_work(d, "hg", b->height, KENT_LENGTH,
+                         lifts ? UP("max(V0/(a*a), hmin)") : UP("hmin"), "10.15",
+                         "height");
     if (!isnan(kent_site_axis(&w->site))) {
         kent_derivation_work(d, "base", kent_site_axis(&w->site) + 0.5 * b->height,
                              KENT_LENGTH, "axis + hg/2", "10.2",
                              "depth of the block's base");
     }
     kent_derivation_work(d, "V", b->volume, KENT_VOLUME, "a*a*hg", "10.8", "concrete");
-    derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(V*gb)" : "Fup/(V*gc)");
+    if (lifts) {
+        derive_reached(w, h, KENT_UPWARD, wet ? "Fup/(V*gb)" : "Fup/(V*gc)");
+    }
     if (down > 0.0) derive_reached(w, h, KENT_DOWNWARD, "Fdn/(a*a*qv)");
 }
 

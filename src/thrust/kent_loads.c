@@ -181,7 +181,7 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
-    const size_t most = 4 + m->state_count + m->march_count + KENT_PORTS;
+    const size_t most = 5 + m->state_count + m->march_count + KENT_PORTS;
 
     loads->cases = kent_alloc(most, sizeof *loads->cases);
     if (!loads->cases) return -1;
@@ -196,6 +196,8 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
     loads_add_at_rest(m, f, "test", KENT_CASE_TEST, kent_press_of_test(m, test, f),
                       loads);
     loads_add_at_rest(m, f, "static", KENT_CASE_STATIC, kent_press_static(m, f), loads);
+    loads_add_at_rest(m, f, "shut-off", KENT_CASE_SHUT_OFF, kent_press_shut_off(m, f),
+                      loads);
     for (size_t s = 0; s < m->state_count; s++) {
         loads_add_steady(r, s, f, loads);
     }

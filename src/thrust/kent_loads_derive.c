@@ -114,6 +114,12 @@ static void sheet_pressure(const kent_sheet *s, const char *symbol, double press
         kent_derivation_work(s->d, symbol, pressure, KENT_PRESSURE,
                              "p_later+rho*g*(z_later-z)", "9.12",
                              "later pressure at the fitting's centre");
+    } else if (c->kind == KENT_CASE_SHUT_OFF) {
+        kent_derivation_put(s->d, "level", sheet_head(s, pressure), KENT_LENGTH,
+                            KENT_COMPUTED,
+                            "level that pumps raise the water to at no flow");
+        kent_derivation_work(s->d, symbol, pressure, KENT_PRESSURE, "rho*g*(level-z)",
+                             "9.15", "pressure at the fitting's centre");
     } else {
         kent_derivation_put(
             s->d, "level", sheet_head(s, pressure), KENT_LENGTH, KENT_GIVEN,

@@ -55,6 +55,18 @@ double kent_press_static(const kent_model *m, const kent_fitting *f)
     return kent_model_pressure(m, level, f->at.z);
 }
 
+double kent_press_shut_off(const kent_model *m, const kent_fitting *f)
+{
+    double level = NAN;
+
+    for (size_t k = f->port_first; k < f->port_first + f->port_count; k++) {
+        const kent_port *port = &m->ports[k];
+        if (port->kind != KENT_PORT_SPAN) continue;
+        level = fmax(level, kent_shut_off_level(m, port->span));
+    }
+    return kent_model_pressure(m, level, f->at.z);
+}
+
 double kent_press_later(const kent_model *m, const kent_fitting *f)
 {
     return from_gauge(m, f, m->loads.future_pressure, m->loads.future_gauge);
@@ -103,6 +115,11 @@ kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
     press_take(
         m, &most,
         (kent_press){KENT_CASE_STATIC, false, kent_press_static(m, f), NAN, none});
+    press_take(
+        m, &most,
+        (kent_press){KENT_CASE_SHUT_OFF, false,
+                     kent_model_pressure(m, kent_shut_off_level(m, leg->span), f->at.z),
+                     NAN, none});
     for (size_t s = 0; s < m->state_count; s++) {
         const double head =
             kent_steady_head(m, r->steadies[s], leg->span, leg->chainage);

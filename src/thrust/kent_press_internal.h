@@ -18,10 +18,12 @@ kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
                            size_t fitting, size_t port, bool whole);
 
 /* Pa, at the fitting's centre: under the site test (9.1), under the highest level
- * connected (9.2) and as expected later (9.12); NAN where there is none. */
+ * connected (9.2), of pumps at no flow (9.15) and as expected later (9.12); NAN where
+ * there is none. */
 double kent_press_of_test(const kent_model *m, const kent_site_test *test,
                           const kent_fitting *f);
 double kent_press_static(const kent_model *m, const kent_fitting *f);
+double kent_press_shut_off(const kent_model *m, const kent_fitting *f);
 double kent_press_later(const kent_model *m, const kent_fitting *f);
 
 /* The factor of a kind of case: as the case gives it, else as the design rules do. */

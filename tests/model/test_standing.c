@@ -167,6 +167,37 @@ static void heads_reach_through_what_lets_water_pass(void **state)
     kent_build_clear(&b);
 }
 
+/* 9.15 by hand, from heads at no flow: P stands on its suction level, the booster at L
+ * on what P raises the water to; K's check valve keeps the booster's from P's side. */
+static void pumps_at_no_flow_raise_the_water(void **state)
+{
+    (void)state;
+    kent_build b = pumped();
+    kent_model *m = b.model;
+    kent_build_check_valve(&b, "NR", "K", "L");
+    const int booster = kent_build_pump(&b, "B", "L", "R", 30.0, 0.1, 20.0);
+    m->pumps[0].suction_level = 41.0;
+    const double first = 41.0 + 130.0;
+    kent_build_derive(&b);
+    assert_int_equal(m->span_count, 3);
+    assert_close(kent_shut_off_level(m, 0), first, 1e-12);
+    assert_close(kent_shut_off_level(m, 1), first, 1e-12);
+    assert_close(kent_shut_off_level(m, 2), first + 30.0, 1e-12);
+    assert_true(isnan(m->shut_off_level[m->fixed_levels[0].node]));
+    assert_close(m->shut_off_level[m->check_valves[0].node[0]], first, 1e-12);
+
+    m->pumps[booster].check_valve = KENT_CHECK_NONE; /* its own head stays behind it */
+    kent_build_derive(&b);
+    assert_close(kent_shut_off_level(m, 1), first, 1e-12);
+    assert_close(kent_shut_off_level(m, 2), first + 30.0, 1e-12);
+    m->pumps[booster].curve.head[0] = 1.0;
+    m->fixed_levels[0].level = 100.0;
+    m->pumps[0].suction_level = -500.0; /* the reservoir is higher: it counts in line */
+    kent_build_derive(&b);
+    assert_close(kent_shut_off_level(m, 2), 101.0, 1e-12);
+    kent_build_clear(&b);
+}
+
 /* A main with no fixed level at all on the pump's side of a shut valve. */
 static void a_suction_level_ties_the_heads_beyond_its_pump(void **state)
 {
@@ -214,6 +245,67 @@ static kent_build boosted(kent_check_kind check)
     const int p = kent_build_pump(&b, "PB", "K", "R", 130.0, 0.14, 97.0);
     b.model->pumps[p].check_valve = check;
     return b;
+}
+
+static bool is_cautioned(const kent_build *b, const char *words)
+{
+    const kent_notes *notes = &b->model->cautions;
+    for (size_t i = 0; i < notes->count; i++) {
+        if (strstr(notes->text[i], words)) return true;
+    }
+    return false;
+}
+
+static void the_tee_of_what_stands_beside_is_asked_for(void **state)
+{
+    (void)state;
+    kent_build b = pumped();
+    kent_build_air_vessel(&b, "V", "K", 10.0, 4.0);
+    kent_build_relief_valve(&b, "RV", "P", 1e6, 0.1);
+    kent_build_derive(&b);
+    assert_true(is_cautioned(&b, "the branches that lead to V at K, RV at P push on"));
+    kent_build_clear(&b);
+
+    b = pumped();
+    kent_build_air_vessel(&b, "V", "K", 10.0, 4.0);
+    const int index = kent_build_note(&b, "K");
+    kent_fitting_note *note = &b.model->notes[index];
+    note->branch.end = KENT_BRANCH_VALVE;
+    note->branch.outside_diameter = 0.2;
+    note->branch.direction = (kent_vec3){0.0, 1.0, 0.0};
+    kent_build_derive(&b);
+    assert_false(is_cautioned(&b, "the branches that lead to"));
+    kent_build_clear(&b);
+}
+
+/* 2 of 3 units run: 3 cannot trip, 2 cannot be started, unless others are before. */
+static void an_event_of_more_units_than_there_are_is_cautioned(void **state)
+{
+    (void)state;
+    static const struct {
+        kent_action action;
+        int units;
+        const char *words; /* NULL: none */
+    } CASES[] = {{KENT_TRIP, 2, NULL},
+                 {KENT_TRIP, 3,
+                  "3 units of pump PS, and in no state that it starts "
+                  "from do more than 2 run"},
+                 {KENT_START, 1, NULL},
+                 {KENT_START, 2, "do more than 1 stand still"}};
+    for (size_t i = 0; i < sizeof CASES / sizeof CASES[0]; i++) {
+        kent_build b = pumped();
+        kent_model *m = b.model;
+        m->pumps[0].in_parallel = 3;
+        m->pumps[0].running = 2;
+        const int s = kent_build_scenario(&b, "cut", 20.0);
+        kent_build_ramp(&b, s, KENT_EVENT_PUMP, 0, 1.0, 1.0, 1.0);
+        m->events[0].action = CASES[i].action;
+        m->events[0].how_many = CASES[i].units;
+        kent_build_derive(&b);
+        const char *words = CASES[i].words ? CASES[i].words : "an event is of";
+        assert_int_equal(is_cautioned(&b, words), CASES[i].words != NULL);
+        kent_build_clear(&b);
+    }
 }
 
 static void a_pump_in_line_is_a_valve_where_a_note_says_so(void **state)
@@ -290,8 +382,11 @@ int main(void)
         cmocka_unit_test(what_stands_beside_a_point_cuts_the_pipe_there),
         cmocka_unit_test(beside_a_device_in_line_it_is_on_one_side),
         cmocka_unit_test(heads_reach_through_what_lets_water_pass),
+        cmocka_unit_test(pumps_at_no_flow_raise_the_water),
         cmocka_unit_test(a_suction_level_ties_the_heads_beyond_its_pump),
         cmocka_unit_test(check_and_control_valves_are_valve_fittings),
+        cmocka_unit_test(the_tee_of_what_stands_beside_is_asked_for),
+        cmocka_unit_test(an_event_of_more_units_than_there_are_is_cautioned),
         cmocka_unit_test(a_pump_in_line_is_a_valve_where_a_note_says_so),
         cmocka_unit_test(a_state_says_how_many_units_run),
         cmocka_unit_test(a_model_with_a_device_out_of_place_is_not_valid),

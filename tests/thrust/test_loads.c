@@ -132,6 +132,33 @@ static void static_pressure_is_of_the_highest_level_or_the_one_stated(void **sta
     kent_net_clear(&n);
 }
 
+/* 9.15: 10 m and 50 m at no flow, in pipes and on a valve that shuts, without a test.
+ */
+static void pumps_at_no_flow_press_too(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    b.model->water.density = RHO;
+    b.model->gravity = G;
+    kent_build_point(&b, "P", 0.0, 0.0, 0.0);
+    kent_build_point(&b, "V", 100.0, 0.0, 2.0);
+    kent_build_point(&b, "L", 200.0, 0.0, 2.0);
+    kent_build_point(&b, "R", 200.0, 100.0, 0.0);
+    kent_build_pipe(&b, "A", "P V L R", 0.3, 1000.0);
+    kent_build_fixed_level(&b, "R", 20.0);
+    kent_build_valve(&b, "G", "V", 0.1, (double)NAN);
+    const int p = kent_build_pump(&b, "PS", "P", NULL, 50.0, 0.05, 40.0);
+    b.model->pumps[p].suction_level = 10.0;
+    kent_net n = kent_net_of(b);
+    kent_net_finish(&n);
+    assert_close(kent_net_case(&n, "L", "shut-off")->worst[KENT_RESULTANT].pressure,
+                 RHO * G * 58.0, 1e-12);
+    const kent_load_case *closed = kent_net_case(&n, "V", "closed from P");
+    assert_int_equal(closed->kind, KENT_CASE_SHUT_OFF);
+    assert_close(closed->worst[KENT_RESULTANT].pressure, RHO * G * 58.0, 1e-12);
+    kent_net_clear(&n);
+}
+
 /* The head at the reducer belongs to its wide side; the narrow one gains what Bernoulli
  * takes. Frictionless, so that the head is known. */
 static void velocity_lowers_the_pressure_of_the_narrow_port(void **state)
@@ -462,6 +489,7 @@ int main(void)
         cmocka_unit_test(without_a_test_pressure_there_is_no_test),
         cmocka_unit_test(test_pressure_is_carried_by_elevation),
         cmocka_unit_test(static_pressure_is_of_the_highest_level_or_the_one_stated),
+        cmocka_unit_test(pumps_at_no_flow_press_too),
         cmocka_unit_test(velocity_lowers_the_pressure_of_the_narrow_port),
         cmocka_unit_test(every_fitting_is_pushed_the_right_way),
         cmocka_unit_test(suction_pulls_every_fitting_the_other_way),
