@@ -41,6 +41,8 @@ typedef struct kent_passage_ops {
     /* what is due at a time of its own; may set states in u. NULL: its timetable only
      */
     void (*due)(kent_passage *l, double time, double *u);
+    /* states that jumped with the heads of a change, into u. NULL: none do */
+    void (*settle)(const kent_passage *l, double *u);
 } kent_passage_ops;
 
 typedef struct kent_level_passage {
@@ -65,6 +67,7 @@ typedef struct kent_gate_flap {
     kent_check_kind kind;
     double delay;    /* s from the first reversal to closure */
     double shuts_at; /* s; INFINITY: the flow has not reversed */
+    double opened;   /* s, when it opened last */
     bool shut;
 } kent_gate_flap;
 
@@ -142,6 +145,7 @@ struct kent_passage {
     void (*clear)(kent_passage *l); /* of what it owns; NULL: nothing */
     kent_timetable timetable;       /* of its opening, flow, level, area or speed */
     double alarm;                   /* s, of its own next change; INFINITY: none */
+    bool settling; /* heads are sought that fit a change: no time passes */
     double start[1 + KENT_PASSAGE_STATES]; /* flow and states in the steady state */
     double scale[1 + KENT_PASSAGE_STATES]; /* what of each is as much as 1 m of head */
     union {

@@ -344,6 +344,23 @@ static bool correct_heads(run *r, double time, double share, double *most)
     return true;
 }
 
+/* Lets links know that no time passes while heads are sought, or that they are found.
+ */
+static void settle_links(const run *r, bool settling)
+{
+    double *y = N_VGetArrayPointer(r->y);
+    for (size_t i = 0; i < r->dae->links->count; i++) {
+        kent_passage *l = &r->dae->links->link[i];
+        if (!settling && l->ops->settle) {
+            double u[KENT_PASSAGE_UNKNOWNS];
+            kent_dae_gather(r->dae, l, y, u);
+            l->ops->settle(l, u);
+            memcpy(&y[l->at + 1], &u[KENT_AT_STATE], l->ops->states * sizeof *u);
+        }
+        l->settling = settling;
+    }
+}
+
 /* Heads and flows that fit the equations after something has changed at once, and the
  * rates of the rest: 17.15. */
 static bool make_consistent(run *r, double time)
@@ -352,12 +369,14 @@ static bool make_consistent(run *r, double time)
     double *rate = N_VGetArrayPointer(r->rate), *f = N_VGetArrayPointer(r->work);
     double most = INFINITY;
 
+    settle_links(r, true);
     for (int i = 0; most > SETTLED; i++) {
         const double share =
             i < CORRECTIONS_WHOLE ? 1.0 : 0.5; /* it may go to and fro */
         if (i == CORRECTIONS_MOST) return false;
         if (!correct_heads(r, time, share, &most)) return false;
     }
+    settle_links(r, false);
     N_VConst(0.0, r->rate);
     kent_dae_residual(r->dae, time, N_VGetArrayPointer(r->y), rate, f);
     for (size_t i = 0; i < r->dae->size; i++) {

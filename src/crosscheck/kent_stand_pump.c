@@ -16,6 +16,7 @@ kent_gate_flap kent_gate_flap_new(kent_check_kind kind, double delay, double flo
     return (kent_gate_flap){.kind = at_once ? KENT_CHECK_IDEAL : kind,
                             .delay = delay,
                             .shuts_at = INFINITY,
+                            .opened = -INFINITY,
                             .shut = kind != KENT_CHECK_NONE && !(flow > 0.0)};
 }
 
@@ -31,12 +32,12 @@ void kent_gate_flap_watch(const kent_gate_flap *f, double flow, double gap,
 void kent_gate_flap_cross(kent_gate_flap *f, double time, size_t root, bool rising)
 {
     if (root == 1) {
-        if (rising) f->shut = false;
-        return;
-    }
-    if (rising) {
+        if (!rising) return;
+        f->shut = false;
+        f->opened = time;
+    } else if (rising) {
         f->shuts_at = INFINITY; /* it flows forward again */
-    } else if (f->kind == KENT_CHECK_IDEAL) {
+    } else if (f->kind == KENT_CHECK_IDEAL || time - f->opened < f->delay) {
         f->shut = true;
     } else {
         f->shuts_at = time + f->delay;

@@ -108,28 +108,53 @@ kent_status kent_stand_control_valve(kent_passages *links, const kent_stand *sta
 
 /* ---- relief valves --------------------------------------------------------------- */
 
+static double relief_asked(const kent_relief_passage *r, double head)
+{
+    if (r->forced) return 1.0;
+    return fmin(fmax((head - r->set) / (r->full - r->set), 0.0), 1.0);
+}
+
+/* Whether it is open as far as the head asks, whatever its state. */
+static bool relief_leads(const kent_passage *l, const double *u)
+{
+    const kent_relief_passage *r = &l->is.relief;
+    return l->settling && !(r->opening_time > 0.0) &&
+           relief_asked(r, u[KENT_AT_HEAD]) > u[KENT_AT_STATE];
+}
+
 /* 17.20 */
 static void relief_law(const kent_passage *l, double time, const double *u,
                        kent_law *law)
 {
     const kent_relief_passage *r = &l->is.relief;
     const double x = u[KENT_AT_STATE], head = u[KENT_AT_HEAD];
-    const kent_opening o = kent_passage_one_way(
-        r->capacity * fmax(x, 0.0), r->conductance, u[KENT_AT_FLOW], head - r->level);
     const double asked = (head - r->set) / (r->full - r->set);
     const bool within = !r->forced && asked > 0.0 && asked < 1.0;
-    const double target = r->forced ? 1.0 : fmin(fmax(asked, 0.0), 1.0);
+    const double target = relief_asked(r, head);
+    const bool leads = relief_leads(l, u);
+    const double open = leads ? target : fmax(x, 0.0);
+    const kent_opening o = kent_passage_one_way(r->capacity * open, r->conductance,
+                                                u[KENT_AT_FLOW], head - r->level);
     const stroke s =
         move_within((target - x) / FOLLOWS, x, r->opening_time, r->closure_time);
+    const double by_open = open > 0.0 ? o.by_e * r->capacity : 0.0;
     (void)time;
     law->f = o.f;
     law->by[KENT_AT_FLOW] = o.by_flow;
     law->by[KENT_AT_HEAD] = o.by_drop;
-    law->by[KENT_AT_STATE] = x > 0.0 ? o.by_e * r->capacity : 0.0;
+    law->by[KENT_AT_STATE] = leads ? 0.0 : by_open;
+    if (leads && within) law->by[KENT_AT_HEAD] += by_open / (r->full - r->set);
     law->rate[0] = s.speed;
     law->rate_by[0][KENT_AT_STATE] = s.by_opening - s.by_wish / FOLLOWS;
     if (within) {
         law->rate_by[0][KENT_AT_HEAD] = s.by_wish / (FOLLOWS * (r->full - r->set));
+    }
+}
+
+static void relief_settle(const kent_passage *l, double *u)
+{
+    if (relief_leads(l, u)) {
+        u[KENT_AT_STATE] = relief_asked(&l->is.relief, u[KENT_AT_HEAD]);
     }
 }
 
@@ -171,6 +196,7 @@ static const kent_passage_ops RELIEF = {
     .watch = relief_watch,
     .cross = relief_cross,
     .due = relief_due,
+    .settle = relief_settle,
 };
 
 kent_status kent_stand_relief_valve(kent_passages *links, const kent_stand *stand,

@@ -191,6 +191,30 @@ static void one_pump_of_two_trips_with_a_late_check_valve(void **state)
     kent_build_clear(&b);
 }
 
+/* The vessel throws the disc of the check valve shut; what rebounds between both opens
+ * it again for a moment, near its seat (13.14). */
+static void late_check_valve_close_to_a_vessel(void **state)
+{
+    (void)state;
+    kent_build b = pumped_main(KENT_CHECK_DELAYED);
+    b.model->points[1].at = (kent_vec3){25.0, 0.0, 0.0};
+    kent_build_air_vessel(&b, "A", "M", 5.0, 2.0);
+    assert_both_agree(&b, 0.03); /* a front */
+    kent_build_clear(&b);
+}
+
+/* The slam finds a relief valve that opens at once open. */
+static void late_check_valve_beside_a_relief_valve(void **state)
+{
+    (void)state;
+    kent_build b = pumped_main(KENT_CHECK_DELAYED);
+    b.model->points[1].at = (kent_vec3){25.0, 0.0, 0.0};
+    kent_build_air_vessel(&b, "A", "M", 5.0, 2.0);
+    kent_build_relief_valve(&b, "B", "P", 5.5e5, 0.1);
+    assert_both_agree(&b, 0.03); /* a front */
+    kent_build_clear(&b);
+}
+
 static void pump_stopped_and_started(void **state)
 {
     (void)state;
@@ -240,6 +264,8 @@ int main(void)
         cmocka_unit_test(tripped_pump_behind_an_ideal_check_valve),
         cmocka_unit_test(tripped_pump_that_turns_back),
         cmocka_unit_test(one_pump_of_two_trips_with_a_late_check_valve),
+        cmocka_unit_test(late_check_valve_close_to_a_vessel),
+        cmocka_unit_test(late_check_valve_beside_a_relief_valve),
         cmocka_unit_test(pump_stopped_and_started),
         cmocka_unit_test(air_valve),
     };
