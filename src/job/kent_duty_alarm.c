@@ -83,6 +83,21 @@ static void look_at_device(const kent_steady *s, size_t device, const char *name
     }
 }
 
+/* What a scenario leaves out passes nothing from its first instant on. */
+static void look_at_march(const kent_steady *s, size_t device, const char *name,
+                          int scenario, kent_notes *cautions)
+{
+    const kent_model *m = s->model;
+    const double q = s->device_flow[device];
+    if (q == 0.0 || !kent_device_is_left_out(m, device, scenario)) return;
+    kent_notes_add(cautions,
+                   "scenario %s: it leaves out %s %s, which passes %s in the steady "
+                   "state: that stream stops as it begins, a surge of its own; let the "
+                   "device be at rest then, or leave it in",
+                   m->scenarios[scenario].id, kent_device_word(m->devices[device].kind),
+                   name, flow(m, q).s);
+}
+
 void kent_duty_alarms_raise(const kent_model *m, kent_steady *const *steadies,
                             size_t count, kent_notes *cautions)
 {
@@ -91,6 +106,11 @@ void kent_duty_alarms_raise(const kent_model *m, kent_steady *const *steadies,
             if (!steadies[k]) continue;
             const kent_name name = kent_name_in_state(m, m->devices[i].id, (int)k);
             look_at_device(steadies[k], i, name.s, cautions);
+            for (size_t j = 0; j < m->march_count; j++) {
+                const kent_march *march = &m->marches[j];
+                if (march->state != (int)k) continue;
+                look_at_march(steadies[k], i, name.s, march->scenario, cautions);
+            }
         }
     }
 }

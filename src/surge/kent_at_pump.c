@@ -316,7 +316,6 @@ static void merge(station *s)
             const double share = (double)b->units / (double)(a->units + b->units);
             a->flow += share * (b->flow - a->flow);
             a->torque += share * (b->torque - a->torque);
-            a->flap.stopped = fmax(a->flap.stopped, b->flap.stopped);
             a->units += b->units;
             s->groups[k--] = s->groups[--s->count];
         }

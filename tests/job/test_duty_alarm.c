@@ -20,8 +20,8 @@ static kent_build station(double level)
     return b;
 }
 
-/* Clears b. words NULL: none is raised. */
-static void assert_raised(kent_build *b, const char *words)
+/* Clears b. words: of the last of so many alarms. */
+static void assert_raises(kent_build *b, size_t count, const char *words)
 {
     kent_notes notes = {0};
     kent_error err = {0};
@@ -29,13 +29,19 @@ static void assert_raised(kent_build *b, const char *words)
     kent_build_derive(b);
     if (kent_steady_solve(b->model, &steady, &err)) fail_msg("%s", err.what);
     kent_duty_alarms_raise(b->model, &steady, 1, &notes);
-    assert_int_equal(notes.count, words ? 1 : 0);
-    if (words && !strstr(notes.text[0], words)) {
-        fail_msg("no '%s' in: %s", words, notes.text[0]);
+    assert_int_equal(notes.count, count);
+    if (count > 0 && !strstr(notes.text[count - 1], words)) {
+        fail_msg("no '%s' in: %s", words, notes.text[count - 1]);
     }
     kent_notes_clear(&notes);
     kent_steady_free(steady);
     kent_build_clear(b);
+}
+
+/* words NULL: none is raised. */
+static void assert_raised(kent_build *b, const char *words)
+{
+    assert_raises(b, words ? 1 : 0, words);
 }
 
 static void a_station_on_its_curve_raises_nothing(void **state)
@@ -100,6 +106,24 @@ static void a_relief_valve_that_flows_is_told(void **state)
     assert_raised(&b, "relief valve RV: it passes");
 }
 
+/* The march would begin with a valve shut at once. */
+static void a_scenario_without_a_relief_valve_that_flows_is_told(void **state)
+{
+    (void)state;
+    for (int flows = 0; flows < 2; flows++) {
+        kent_build b = station(50.0);
+        kent_build_relief_valve(&b, "RV", "P", flows ? 3.8e5 : 8e5, 0.001);
+        (void)kent_build_scenario(&b, "with", 5.0);
+        const int bare = kent_build_scenario(&b, "bare", 5.0);
+        b.model->without = kent_alloc(1, sizeof *b.model->without);
+        assert_non_null(b.model->without);
+        b.model->without[0] = (kent_left_out){KENT_DEVICE_RELIEF_VALVE, 0};
+        b.model->without_count = b.model->scenarios[bare].without_count = 1;
+        assert_raises(&b, flows ? 2 : 0,
+                      "scenario bare: it leaves out relief valve RV, which passes");
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -109,6 +133,7 @@ int main(void)
         cmocka_unit_test(units_that_stand_without_a_check_valve_are_told),
         cmocka_unit_test(units_that_stand_in_the_way_of_water_are_told),
         cmocka_unit_test(a_relief_valve_that_flows_is_told),
+        cmocka_unit_test(a_scenario_without_a_relief_valve_that_flows_is_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
