@@ -198,7 +198,8 @@ static void fill_pump_event(kent_filling *f, kent_record *record, kent_event *e)
         kent_record_complain(r, record, "to",
                              "to is a flow where a share of the rated speed from 0.0 "
                              "to 1.5 belongs");
-    } else if (e->target >= 0 && e->how_many > f->model->pumps[e->target].in_parallel) {
+    } else if (e->target >= 0 && f->model->pumps[e->target].in_parallel > 0 &&
+               e->how_many > f->model->pumps[e->target].in_parallel) {
         kent_record_complain(r, record, "how_many",
                              "how_many = %d is more than the %d in_parallel",
                              e->how_many, f->model->pumps[e->target].in_parallel);

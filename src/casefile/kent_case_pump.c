@@ -199,6 +199,10 @@ static void fill_units(kent_filling *f, kent_record *record, kent_pump *p)
     if (!record->sound) return;
     p->in_parallel = (int)units;
     p->running = (int)running;
+    if (p->in_parallel > 1 && !kent_record_has(record, "running")) {
+        kent_fill_assume_of(f, record, KENT_DEVICE_PUMP, "running", "all",
+                            "not given: every unit in_parallel runs");
+    }
     if (p->running > p->in_parallel) {
         kent_record_complain(&f->reader, record, "running",
                              "running = %d is more than the %d in_parallel", p->running,

@@ -75,6 +75,7 @@ static void fill_running(kent_filling *f, kent_record *record, const kent_twig *
     const int pump = kent_record_lookup(r, record, name, "running", KENT_SHELF_PUMPS);
     const double units = kent_twig_number(kent_twig_child(pair, 1));
     if (pump < 0) return;
+    if (m->pumps[pump].in_parallel < 1) return; /* of a pump that is at fault itself */
     if (units < 0.0 || units > m->pumps[pump].in_parallel) {
         kent_record_complain(r, record, "running",
                              "running: %.9g of \"%s\" is out of range; it has %d "

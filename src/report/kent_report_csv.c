@@ -3,6 +3,8 @@
 #include "kent_summary.h"
 
 #include <math.h>
+#include <stdio.h>
+#include <string.h>
 
 /* A further field: a number to ten digits, empty where there is none. */
 static void add_field(kent_text *out, double value)
@@ -20,6 +22,21 @@ static void add_column(kent_text *out, const char *of, const char *quantity)
     kent_text_clear(&head);
 }
 
+/* What the columns of a device start with: never what those of a point do. */
+static kent_name heading_of(const kent_model *m, size_t device)
+{
+    const kent_device *d = &m->devices[device];
+    kent_name name = kent_device_name(m, device);
+    if (d->kind == KENT_DEVICE_BURST || kent_model_point_index(m, d->id) < 0) {
+        return name;
+    }
+    (void)snprintf(name.s, sizeof name.s, "%s.%s", d->id, kent_device_word(d->kind));
+    for (char *c = name.s + strlen(d->id); *c; c++) {
+        if (*c == ' ') *c = '-';
+    }
+    return name;
+}
+
 static void add_history_heading(const kent_results *r, kent_text *out)
 {
     static const char *const COLUMNS[] = {"head_m", "pressure_Pa", "flow_m3s"};
@@ -31,7 +48,7 @@ static void add_history_heading(const kent_results *r, kent_text *out)
         }
     }
     for (size_t i = 0; i < m->device_count; i++) {
-        const kent_name name = kent_device_name(m, i);
+        const kent_name name = heading_of(m, i);
         const kent_device_quantity *q = kent_device_quantities(m->devices[i].kind);
         add_column(out, name.s, COLUMNS[2]);
         for (int j = 0; j < KENT_TOLD && q[j].name; j++) {

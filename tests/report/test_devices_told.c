@@ -5,6 +5,7 @@
 
 #include <jansson.h>
 #include <math.h>
+#include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -144,6 +145,26 @@ static void histories_have_columns_for_devices(void **state)
     kent_build_clear(&b);
 }
 
+/* Two columns of one name would be read as one. */
+static void a_device_called_as_its_point_has_columns_of_its_own(void **state)
+{
+    (void)state;
+    kent_build b = pumped_main();
+    (void)snprintf(b.model->air_vessels[0].id, KENT_ID, "PH");
+    kent_results *r = run(&b);
+    kent_text out = {0};
+    assert_int_equal(kent_report_history_csv(r, 1, kent_mixed_sink(&out)), KENT_OK);
+    const char *text = kent_text_of(&out);
+    assert_non_null(
+        strstr(text, ",PH.air-vessel.flow_m3s,PH.air-vessel.gas_volume_m3,"));
+    const char *first = strstr(text, ",PH.flow_m3s,");
+    assert_non_null(first);
+    assert_null(strstr(first + 1, ",PH.flow_m3s,"));
+    kent_text_clear(&out);
+    kent_results_free(r);
+    kent_build_clear(&b);
+}
+
 static const json_t *device_in(const json_t *root, size_t scenario, const char *id)
 {
     size_t i = 0;
@@ -196,6 +217,7 @@ int main(void)
         cmocka_unit_test(extremes_are_those_of_the_history),
         cmocka_unit_test(a_tank_that_overflows_is_cautioned),
         cmocka_unit_test(histories_have_columns_for_devices),
+        cmocka_unit_test(a_device_called_as_its_point_has_columns_of_its_own),
         cmocka_unit_test(results_tell_every_device_of_every_scenario),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
