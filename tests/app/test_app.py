@@ -304,6 +304,16 @@ class App(unittest.TestCase):
         self.assertEqual((r.returncode, r.stdout), (1, ""))
         self.assertEqual(self.left(), set())
 
+    def test_what_stops_a_march_is_status_1_and_says_in_which_scenario(self):
+        text = (SOURCE / "cases/learn/10-pumped-main/10-pumped-main.cfg").read_text()
+        (self.dir / "main.cfg").write_text(
+            text.replace('total_volume = "3 m^3"', 'total_volume = "1.25 m^3"'))
+        r = self.call("run", "main.cfg", "--no-files")
+        self.assertEqual(r.returncode, 1)
+        self.assertEqual(r.stdout, "")
+        self.assertRegex(r.stderr,
+                         r'scenario power-cut \(two\): air vessel "VES" is empty of water')
+
     def test_a_full_disk_on_standard_output_is_status_1_and_leaves_no_folder(self):
         for args in (["run", "main.cfg"], ["check", "main.cfg"], ["catalogue"],
                      ["explain", "main.cfg", "PI1"], ["--help"], ["--version"]):
