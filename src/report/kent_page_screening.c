@@ -140,8 +140,9 @@ void kent_page_swings(kent_page *page)
         for (size_t p = 0; p < r->model->pipe_count; p++) {
             kent_tiring s;
             if (!kent_tiring_of(r, i, p, &s)) continue;
-            if (page->wide || rows < TIRED)
+            if (page->wide || rows < TIRED) {
                 swing_row(page, &r->scenarios[i], p, &s, &t);
+            }
             rows++;
         }
     }

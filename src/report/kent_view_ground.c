@@ -224,6 +224,54 @@ static void add_factors(const kent_view *v, kent_text *out)
     kent_text_add(out, ". Design rules: %s.", v->model->rules.id);
 }
 
+/* "Lowest pressure asked: steady 1.40 bar, ...; life 50 years." Nothing where nobody
+ * asks. */
+static void add_lowest(const kent_view *v, kent_text *out)
+{
+    static const double YEAR = 31557600.0; /* s */
+    const kent_asked *a = &v->model->asked;
+    bool any = false;
+    kent_shown s;
+    for (int i = -1; i < 3; i++) {
+        const double lowest = i < 0 ? a->lowest_steady : a->lowest[i];
+        if (isnan(lowest)) continue;
+        kent_text_add(out, "%s%s %s", any ? ", " : " Lowest pressure asked: ",
+                      i < 0 ? "steady" : kent_class_word((kent_class)i),
+                      said(v, KENT_PRESSURE, lowest, &s));
+        any = true;
+    }
+    if (any) kent_text_add(out, ".");
+    if (isfinite(a->life)) kent_text_add(out, " It serves %.4g years.", a->life / YEAR);
+}
+
+/* What joints and fittings are rated for by the case. */
+static void add_rated(const kent_view *v, kent_text *out)
+{
+    const kent_model *m = v->model;
+    kent_shown s;
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        if (isnan(m->pipes[i].joint_rating)) continue;
+        kent_text_add(out, " Joints of %s are rated %s.", m->pipes[i].id,
+                      said(v, KENT_PRESSURE, m->pipes[i].joint_rating, &s));
+    }
+    for (size_t i = 0; i < m->note_count; i++) {
+        const kent_fitting_note *n = &m->notes[i];
+        if (isnan(n->rating)) continue;
+        kent_text_add(out, " Parts of %s are rated %s", n->id,
+                      said(v, KENT_PRESSURE, n->rating, &s));
+        if (n->surge_rating != n->rating) {
+            kent_text_add(out, ", %s with surge",
+                          said(v, KENT_PRESSURE, n->surge_rating, &s));
+        }
+        if (n->test_rating != n->rating) {
+            kent_text_add(out, ", %s under test",
+                          said(v, KENT_PRESSURE, n->test_rating, &s));
+        }
+        kent_text_add(out, "%s%s%s.", n->standard[0] ? " (" : "", n->standard,
+                      n->standard[0] ? ")" : "");
+    }
+}
+
 void kent_view_loads(const kent_view *v)
 {
     const kent_loads *l = &v->model->loads;
@@ -250,6 +298,8 @@ void kent_view_loads(const kent_view *v)
                       kent_view_point(v->model, l->future_gauge));
     }
     add_factors(v, &words);
+    add_lowest(v, &words);
+    add_rated(v, &words);
     kent_view_say(v, "", &words);
     kent_text_clear(&words);
 }

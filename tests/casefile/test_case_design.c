@@ -555,6 +555,50 @@ static void what_needs_a_main_is_refused_beside_ports(void **state)
     kent_catalogue_free(c);
 }
 
+/* What is asked beyond the pipe's ratings, each key by its own; and left out. */
+static void what_is_asked_of_pressures_arrives(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *joints = replaced(DESIGN_CASE, "joint = \"push-on\";",
+                            "joint = \"push-on\"; joint_rating = \"12 bar\";");
+    char *often = replaced(joints, "class = \"occasional\";",
+                           "class = \"recurring\"; cycles_per_day = 3.5;");
+    char *rated = replaced(often, "{ at = \"B1\"; obstacles",
+                           "{ at = \"B1\"; rating = \"16 bar\"; surge_rating = \"20 "
+                           "bar\"; standard = \"EN 1092-2, PN 16\"; obstacles");
+    char *text = replaced(rated, "loads = {",
+                          "limits = { lowest_steady = \"1.4 bar\"; lowest_recurring = "
+                          "\"0.2 bar\"; lowest_occasional = \"0 bar\"; "
+                          "lowest_exceptional = \"-0.4 bar\"; life = \"50 years\"; };\n"
+                          "loads = {");
+    kent_model *m = read_sound(c, text);
+    assert_close(m->pipes[0].joint_rating, 12e5, 1e-12);
+    assert_false(m->pipes[0].plastic);
+    assert_close(m->scenarios[0].cycles_per_day, 3.5, 1e-15);
+    assert_close(m->notes[0].rating, 16e5, 1e-12);
+    assert_close(m->notes[0].surge_rating, 20e5, 1e-12);
+    assert_close(m->notes[0].test_rating, 16e5, 1e-12); /* as in service */
+    assert_string_equal(m->notes[0].standard, "EN 1092-2, PN 16");
+    assert_close(m->asked.lowest_steady, 1.4e5, 1e-12);
+    assert_close(m->asked.lowest[KENT_RECURRING], 0.2e5, 1e-12);
+    assert_within(m->asked.lowest[KENT_OCCASIONAL], 0.0, 0.0);
+    assert_close(m->asked.lowest[KENT_EXCEPTIONAL], -0.4e5, 1e-12);
+    assert_close(m->asked.life, 50.0 * 365.2422 * 86400.0, 1e-6); /* tropical years */
+    kent_model_free(m);
+
+    m = read_sound(c, DESIGN_CASE);
+    assert_true(isnan(m->pipes[0].joint_rating) && isnan(m->notes[0].rating));
+    assert_true(isnan(m->scenarios[0].cycles_per_day) && isnan(m->asked.life));
+    assert_true(isnan(m->asked.lowest_steady) && isnan(m->asked.lowest[0]));
+    kent_model_free(m);
+    free(text);
+    free(rated);
+    free(often);
+    free(joints);
+    kent_catalogue_free(c);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -563,6 +607,7 @@ int main(void)
         cmocka_unit_test(the_bearing_of_a_row_is_assumed_in_its_own_way),
         cmocka_unit_test(a_bearing_that_cannot_be_known_is_refused),
         cmocka_unit_test(zones_of_ground_arrive),
+        cmocka_unit_test(what_is_asked_of_pressures_arrives),
         cmocka_unit_test(an_obstacle_lies_sideways),
         cmocka_unit_test(branches_and_roles_arrive),
         cmocka_unit_test(an_open_branch_without_a_bore_is_as_wide_as_it_is),

@@ -370,6 +370,21 @@ static void factors_are_told_one_by_one_only_where_they_differ(void **state)
     kent_build_clear(&b);
 }
 
+static void what_is_asked_of_pressures_is_told(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    kent_build_derive(&b);
+    b.model->asked.lowest_steady = 1.4e5;
+    b.model->asked.lowest[KENT_EXCEPTIONAL] = -0.4e5;
+    b.model->asked.life = 50.0 * 365.25 * 86400.0;
+    b.model->pipes[0].joint_rating = 16e5;
+    assert_says(&b, KENT_SI, "Lowest pressure asked: steady 1.40 bar, exceptional ");
+    assert_says(&b, KENT_SI, "It serves 50 years.");
+    assert_says(&b, KENT_SI, "are rated 16.00 bar.");
+    kent_build_clear(&b);
+}
+
 static void a_test_is_told_by_its_rule(void **state)
 {
     (void)state;
@@ -468,6 +483,7 @@ int main(void)
         cmocka_unit_test(an_event_starts_from_where_the_last_one_ended),
         cmocka_unit_test(a_valve_goes_from_its_opening_to_another),
         cmocka_unit_test(factors_are_told_one_by_one_only_where_they_differ),
+        cmocka_unit_test(what_is_asked_of_pressures_is_told),
         cmocka_unit_test(a_test_is_told_by_its_rule),
         cmocka_unit_test(a_large_main_is_counted_and_only_what_is_unusual_is_told),
         cmocka_unit_test(a_main_of_two_hundred_points_is_told_whole),
