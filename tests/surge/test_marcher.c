@@ -1,3 +1,4 @@
+#include "ledger.h"
 #include "march.h"
 
 #include <math.h>
@@ -233,23 +234,18 @@ static void kernels_and_block_sizes_give_the_same_bits(void **state)
     kent_build_clear(&b);
 }
 
-/* Water held in a span by its elasticity, m3 over that at head nil: dt/B times the mean
- * of the two waves in each reach (7.20). Frictionless. */
+/* Frictionless. */
 static double held(const march *m, int span)
 {
     const size_t n = (size_t)m->grid->reaches[span];
-    const kent_span *s = &m->build->model->spans[span];
-    const double b =
-        m->grid->wave_speed_used[span] / (m->build->model->gravity * s->area);
     double *head = kent_alloc(2 * (n + 1), sizeof *head), *flow = head + n + 1;
-    double sum = 0.0;
     assert_non_null(head);
     kent_marcher_profile(m->marcher, span, head, flow);
-    for (size_t i = 0; i < n; i++) {
-        sum += head[i] + b * flow[i] + head[i + 1] - b * flow[i + 1];
-    }
+    const double sum =
+        ledger_held(n, ledger_impedance(m->build->model, m->grid, (size_t)span),
+                    m->grid->step, head, flow);
     free(head);
-    return 0.5 * sum * m->grid->step / b;
+    return sum;
 }
 
 static void no_water_is_lost_or_made(void **state)
