@@ -241,6 +241,7 @@ static void hold_fittings(holding *h, const double *node_head)
         const kent_fitting_note *n = &m->notes[i];
         if (isnan(n->rating) || n->point < 0) continue;
         const double level = node_head ? head_at(m, n->point, node_head) : NAN;
+        if (node_head && isnan(level)) continue; /* no pump reaches it */
         const kent_reached at = highest_at(h, n->point, &level);
         kent_limit row = row_of(h, KENT_LIMIT_FITTING, at, rating_of(n, h->rating));
         row.note = (int)i;
@@ -298,6 +299,27 @@ static void look_at_lines(holding *h, const double *node_head)
     }
 }
 
+/* Of water that pumps at no flow press, the same all along a span; head [node_count]
+ * becomes that of its nodes. */
+static void look_at_shut_off(holding *h, double *head)
+{
+    const kent_model *m = h->results->model;
+    clear_reached(h);
+    for (size_t i = 0; i < m->node_count; i++) {
+        head[i] = NAN;
+    }
+    for (size_t i = 0; i < m->span_count; i++) {
+        const kent_span *s = &m->spans[i];
+        const double level = kent_shut_off_level(m, (int)i);
+        if (isnan(level)) continue;
+        const double ends[2] = {level, level};
+        further(&h->highest[s->pipe], KENT_SEARCH_HIGHEST,
+                kent_reach_of_line(m, (int)i, ends, KENT_SEARCH_HIGHEST));
+        head[s->node[0]] = fmax(head[s->node[0]], level);
+        head[s->node[1]] = fmax(head[s->node[1]], level);
+    }
+}
+
 static void look_at_march(holding *h)
 {
     const kent_model *m = h->results->model;
@@ -321,6 +343,16 @@ static void hold_static(holding *h, double *head)
     }
     begin(h, kent_name_in_state(m, "static", -1), -1, -1, KENT_RATING_SERVICE);
     look_at_lines(h, head);
+    hold_highest(h);
+    hold_fittings(h, head);
+}
+
+static void hold_shut_off(holding *h, double *head)
+{
+    const kent_model *m = h->results->model;
+    if (m->pump_count == 0) return;
+    begin(h, kent_name_in_state(m, "shut-off", -1), -1, -1, KENT_RATING_SERVICE);
+    look_at_shut_off(h, head);
     hold_highest(h);
     hold_fittings(h, head);
 }
@@ -386,6 +418,7 @@ kent_status kent_limit_table_fill(kent_results *r, kent_error *err)
     h.failed = !h.highest || !h.lowest || !h.outward || !head;
     if (!h.failed && m->span_count > 0) {
         hold_static(&h, head);
+        hold_shut_off(&h, head);
         for (size_t i = 0; i < r->steady_count; i++) {
             hold_steady(&h, i);
         }

@@ -140,6 +140,34 @@ static void joints_have_a_rating_of_their_own(void **state)
     }
 }
 
+/* 90 m at no flow on 10 m, over the low point D at 20 m: 80 m, where 60 m stand still.
+ */
+static void pipes_are_held_against_pumps_at_no_flow(void **state)
+{
+    (void)state;
+    for (int over = 0; over < 2; over++) {
+        kent_build b = sagging_main();
+        kent_build_point(&b, "P", -100.0, 0.0, 30.0);
+        kent_build_point(&b, "Q", -50.0, 500.0, 20.0);
+        kent_build_point(&b, "S", -50.0, 900.0, 30.0);
+        kent_build_pipe(&b, "B", "P Q S", 0.5, 1000.0);
+        kent_build_fixed_level(&b, "S", 60.0);
+        const int p = kent_build_pump(&b, "PS", "P", NULL, 90.0, 0.1, 70.0);
+        b.model->pumps[p].suction_level = 10.0;
+        b.model->pumps[p].check_valve = KENT_CHECK_IDEAL;
+        b.model->pipes[1].pressure_rating = (over ? 0.99 : 1.01) * 80.0 * UNIT_WEIGHT;
+        b.model->scenarios[0].for_comparison = true;
+        kent_results *r = run(&b);
+        const kent_limit *l = row(r, KENT_LIMIT_PIPE, "shut-off");
+        assert_non_null(l);
+        assert_int_equal(l->pipe, 1); /* no pump reaches A */
+        assert_close(l->reached, 80.0 * UNIT_WEIGHT, 1e-9);
+        assert_int_equal(l->exceeded, over);
+        kent_results_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 /* In service by its rating, with surge by that with surge, under test by that. */
 static void a_fitting_is_held_against_its_own_parts(void **state)
 {
@@ -371,6 +399,7 @@ int main(void)
         cmocka_unit_test(the_lowest_pressure_is_held_by_class),
         cmocka_unit_test(steady_flow_has_a_lowest_of_its_own),
         cmocka_unit_test(joints_have_a_rating_of_their_own),
+        cmocka_unit_test(pipes_are_held_against_pumps_at_no_flow),
         cmocka_unit_test(a_fitting_is_held_against_its_own_parts),
         cmocka_unit_test(a_test_without_a_gauge_is_the_same_everywhere),
         cmocka_unit_test(a_fitting_without_a_network_is_held_by_its_ports),
