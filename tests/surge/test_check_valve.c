@@ -102,6 +102,15 @@ static void a_delayed_one_shuts_so_long_after_reversal(void **state)
     r.head[0] = 60.0; /* opens again at once */
     rig_advance(&r);
     assert_true(r.flow > 0.0);
+    for (int i = 0; i < 70;
+         i++) { /* stops less the second time: the greatest is told */
+        if (i == 30) r.head[0] = r.head[1] - r.flow / r.y - 1.0;
+        rig_advance(&r);
+        assert_true(i < 30   ? r.flow > 0.0
+                    : i < 55 ? r.flow < 0.0
+                             : i < 57 || r.flow == 0.0);
+    }
+    assert_close(rig_told(&r, 0), stopped / area, 1e-13);
     rig_clear(&r);
 }
 

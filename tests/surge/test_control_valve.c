@@ -134,6 +134,20 @@ static void at_rest_it_is_shut_whatever_rounding_left(void **state)
     lone_clear(&l);
 }
 
+/* It reduces to 50 m: still water above that finds it shut, below it open. */
+static void still_water_finds_it_as_its_pressure_asks(void **state)
+{
+    (void)state;
+    for (int below = 0; below < 2; below++) {
+        lone l;
+        kent_control_valve valve = control_of(KENT_HOLDS_DOWNSTREAM, 8.0);
+        const double head = below ? 45.0 : 60.0; /* m */
+        control_new(&l, &valve, 0.0, head, head);
+        assert_true(lone_told(&l, 0) == (double)below);
+        lone_clear(&l);
+    }
+}
+
 static void it_lets_nothing_back(void **state)
 {
     (void)state;
@@ -189,6 +203,7 @@ int main(void)
         cmocka_unit_test(it_is_fully_open_where_it_cannot_hold),
         cmocka_unit_test(it_shuts_where_the_pressure_behind_stays_above),
         cmocka_unit_test(at_rest_it_is_shut_whatever_rounding_left),
+        cmocka_unit_test(still_water_finds_it_as_its_pressure_asks),
         cmocka_unit_test(it_lets_nothing_back),
         cmocka_unit_test(without_times_it_follows_at_once),
         cmocka_unit_test(its_law_has_one_answer_and_true_slopes),

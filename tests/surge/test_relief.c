@@ -130,6 +130,7 @@ static void one_that_anticipates_opens_on_the_fall(void **state)
     assert_within(leaves, 8.10, 1e-9);
     assert_within(shut, 28.05, 1e-9);
     assert_int_equal(times, 2);
+    assert_true(lone_told(&l, 0) == 0.0); /* the pressure has not been up again */
     lone_clear(&l);
 }
 
