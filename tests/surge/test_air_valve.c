@@ -213,6 +213,32 @@ static void it_goes_to_the_solution_as_the_step_does(void **state)
     assert_true(off < 1e-4);
 }
 
+/* Air let in again finds a valve that had switched at its full release orifice. */
+static void one_that_switched_is_ready_again_after_air_came_in(void **state)
+{
+    (void)state;
+    lone l;
+    kent_air_valve valve = valve_of(0.1, 0.05);
+    valve.switch_pressure = 5000.0;
+    valve.switched_orifice = 0.01;
+    valve_new(&l, &valve, 0.01);
+    const double full = 0.25 * PI * 0.05 * 0.05;
+    const kent_orifice released = {0.0, 0.7 * full, ATMOSPHERE, WATER};
+    const kent_orifice switched = {0.0, 0.7 * full / 25.0, ATMOSPHERE, WATER};
+    for (int i = 0; i < 1000; i++) { /* in, out fast, in again, out slowly */
+        const double mass = mass_of(&l);
+        const bool fast = i >= 500 && i < 600, slow = i >= 900;
+        lone_beside(&l, fast ? 30.0 : slow ? Z + 0.3 : -5.0, Y);
+        const double p = absolute(&l);
+        const kent_orifice *hole = fast ? &switched : &released;
+        if (!(fast && i >= 590) && !(slow && i >= 950)) continue;
+        assert_true(p > ATMOSPHERE + (fast ? 5000.0 : 10.0));
+        assert_within(mass_of(&l) - mass, 0.01 * kent_air_through(hole, p).mass, 1e-9);
+    }
+    assert_true(mass_of(&l) > 0.0);
+    lone_clear(&l);
+}
+
 /* Non-slam: from 0.05 bar inside it lets air out through 0.02 m in place of 0.15. */
 static void one_that_switches_slams_less(void **state)
 {
@@ -301,6 +327,7 @@ int main(void)
         cmocka_unit_test(what_cannot_leave_is_pressed_by_boyles_law),
         cmocka_unit_test(the_last_air_leaves_with_a_slam),
         cmocka_unit_test(it_goes_to_the_solution_as_the_step_does),
+        cmocka_unit_test(one_that_switched_is_ready_again_after_air_came_in),
         cmocka_unit_test(one_that_switches_slams_less),
         cmocka_unit_test(two_side_by_side_are_one_of_twice_the_area),
         cmocka_unit_test(too_much_air_to_stay_is_said),
