@@ -215,6 +215,10 @@ void kent_fill_air_valve(kent_filling *f, kent_record *record, size_t index)
     const double units = kent_record_number_or(record, "in_parallel", 1.0);
     if (!record->sound) return;
     v->in_parallel = (int)units;
+    if (!f->knows_temperature) { /* which the air has too */
+        kent_fill_assume_value(f, "water temperature", f->model->water.temperature,
+                               KENT_TEMPERATURE, "no temperature given");
+    }
     if (isnan(v->switch_pressure) != isnan(v->switched_orifice)) {
         kent_record_complain(
             &f->reader, record,

@@ -10,6 +10,14 @@ static const char *said(const kent_view *v, kent_kind kind, double si, kent_show
     return room->text;
 }
 
+/* m2: holes are small, so in cm2 or in2. */
+static void add_hole(const kent_view *v, double area, kent_text *out)
+{
+    static const double CM2 = 1e-4, IN2 = 6.4516e-4; /* m2 */
+    const bool us = v->units == KENT_US;
+    kent_text_add(out, "%.3g %s", area / (us ? IN2 : CM2), us ? "in²" : "cm²");
+}
+
 /* ---- states ---------------------------------------------------------------------- */
 
 static void say_state(const kent_view *v, const kent_state *s)
@@ -109,7 +117,7 @@ static void add_value(const kent_view *v, kent_event_kind kind, double value,
         kent_text_add(out, "%s", said(v, KENT_LENGTH, value, &s));
         break;
     case KENT_EVENT_BURST:
-        kent_text_add(out, "%s", said(v, KENT_AREA, value, &s));
+        add_hole(v, value, out);
         break;
     }
 }
