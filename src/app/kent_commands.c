@@ -402,6 +402,11 @@ static kent_exit command_cross_check(session *s)
                             kent_job_threads(s->options->threads), opinions, &s->error);
     if (!status) status = kent_report_cross(r, opinions, &o, kent_output_gather(&text));
     code = print_report(s, status, &text);
+    for (size_t i = 0; i < count && !code; i++) {
+        if (opinions[i].stopped.what[0] == '\0') continue;
+        s->error = opinions[i].stopped;
+        code = fail(s, KENT_E_SOLVE);
+    }
 done:
     for (size_t i = 0; i < count; i++) {
         kent_opinion_clear(&opinions[i]);

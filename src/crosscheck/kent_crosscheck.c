@@ -119,12 +119,15 @@ bool kent_opinion_is_asked(const kent_opinion *o)
 static void say_left_out(const kent_model *m, kent_opinion *o)
 {
     kent_notes *n = &o->left_out;
-    if (m->solver.column_separation != KENT_SEPARATION_NONE || o->report.below_vapour) {
+    const bool below = o->report.below_vapour;
+    if (m->solver.column_separation != KENT_SEPARATION_NONE) {
         kent_notes_add(n, "Column separation: pipes stay full in the second method%s",
-                       o->report.below_vapour
-                           ? ", and its head falls below the vapour limit here. From "
-                             "then on the two solve different problems"
-                           : "; its head stays above the vapour limit here");
+                       below ? ", and its head falls below the vapour limit here. From "
+                               "then on the two solve different problems"
+                             : "; its head stays above the vapour limit here");
+    } else if (below) {
+        kent_notes_add(n, "Column separation, by both methods: heads fall below the "
+                          "vapour limit here, where water parts and neither is right");
     }
     if (m->solver.friction == KENT_SURGE_UNSTEADY) {
         kent_notes_add(n, "Unsteady friction: the second method's is quasi-steady, so "
@@ -217,9 +220,12 @@ kent_status kent_crosscheck_run(const kent_model *m, kent_steady *const *steadie
     }
     if (!status) kent_queue_run(jobs, threads, solve_job, &p);
     for (size_t j = 0; j < jobs && !status; j++) {
-        if (!p.statuses[j]) continue;
-        *err = p.errors[j];
-        status = p.statuses[j];
+        if (p.statuses[j] == KENT_E_SOLVE) {
+            out[j / WAYS].stopped = p.errors[j];
+        } else if (p.statuses[j]) {
+            *err = p.errors[j];
+            status = p.statuses[j];
+        }
     }
     for (size_t i = 0; i < count && !status; i++) {
         if (out[i].rigid_report.switches > 0) {

@@ -20,14 +20,17 @@ typedef struct kent_opinion { /* on one march */
     double back_and_forth; /* s: 2L/a, twice the way from an event to where it is
                               longest */
     kent_notes left_out;   /* sentences */
+    kent_error stopped;    /* what: why it has no peaks; "": it went to the end */
 } kent_opinion;
 
-/* Whether agreement is asked for: the quickest event takes at least 2L/a. */
+/* Whether the quickest event takes at least 2L/a. Then agreement is asked for, but
+ * where water parts in one method and not in the other. */
 bool kent_opinion_is_asked(const kent_opinion *o);
 
 /* marches: [count] of m, steadies: [state_count] of its states. threads as of
  * kent_queue_run. out: [count], all zero, filled as far as it went; each is cleared by
- * the caller. Fails as kent_second_solve. */
+ * the caller. Where the second method stops on the way, that opinion says so and
+ * the others go on. Fails with KENT_E_NOMEM. */
 kent_status kent_crosscheck_run(const kent_model *m, kent_steady *const *steadies,
                                 const kent_march *marches, size_t count,
                                 unsigned threads, kent_opinion *out, kent_error *err);

@@ -20,12 +20,13 @@ static const double RELATIVE = 1e-9;
 static const double LONGEST_STEP = 2.0;
 /* 1/s, in place of 1/step where cells must stand still. */
 static const double STANDSTILL = 1e12;
+/* Steps times unknowns of a run: some 0.1 us each. */
+static const double WORK_MOST = 5e9;
 /* Share of the tolerance within which heads fit after a change. */
 static const double SETTLED = 1e-3;
 enum {
     CORRECTIONS_WHOLE = 20, /* of heads after a change; then by halves, ... */
     CORRECTIONS_MOST = 80,  /* to this many */
-    STEPS_MOST = 20000000,  /* of a run */
     SWITCHES_MOST = 20000
 };
 
@@ -306,7 +307,6 @@ static kent_status tell_stop(run *r, int flag, double time, kent_error *err)
     char where[KENT_ID + 32] = "";
     if (flag == IDA_MEM_NULL || flag == IDA_MEM_FAIL) return kent_error_nomem(err);
     name_unknown(r, find_worst(r), where, sizeof where);
-    /* unreached: every case of the tests is solved */
     return kent_error_set(err, KENT_E_SOLVE, "",
                           "the second method stopped at %.4g s, most in doubt %s "
                           "(IDA %d: %s)",
@@ -445,7 +445,8 @@ static kent_status integrate(run *r, double *time, double until, bool *root,
         if (flag < 0) break;
         take_heads(r, now);
         *root = flag == IDA_ROOT_RETURN;
-        if (++r->report->steps > STEPS_MOST) {
+        r->report->steps++;
+        if ((double)r->report->steps * (double)r->dae->size > WORK_MOST) {
             (void)snprintf(r->said, sizeof r->said, "too many steps");
             return tell_stop(r, flag, now, err);
         }

@@ -162,10 +162,19 @@ static void add_worst(const kent_page *page, size_t index, double asked,
     kent_text_add(words, ". ");
 }
 
+/* Whether water parts in the march, while pipes of the second method stay full. */
+static bool is_parted(const kent_page *page, size_t index)
+{
+    return page->view.model->solver.column_separation != KENT_SEPARATION_NONE &&
+           (page->opinions[index].report.below_vapour ||
+            page->results->scenarios[index].below_vapour > 0);
+}
+
 static void say_verdict(const kent_page *page, size_t index)
 {
     const kent_opinion *o = &page->opinions[index];
-    const bool asked = kent_opinion_is_asked(o);
+    const bool slow = kent_opinion_is_asked(o);
+    const bool asked = slow && !is_parted(page, index);
     kent_text words = {0};
     add_worst(page, index, asked ? KENT_CROSSCHECK_ASKED : 0.0, &words);
     if (isinf(o->ramp)) {
@@ -173,11 +182,19 @@ static void say_verdict(const kent_page *page, size_t index)
     } else if (asked) {
         kent_text_add(&words, "Its quickest event takes %.3g s, 2L/a is %.3g s.",
                       o->ramp, o->back_and_forth);
+    } else if (slow) {
+        kent_text_add(&words, "Of heads below the vapour limit no agreement is asked.");
     } else {
         kent_text_add(&words,
                       "Its quickest event takes %.3g s, less than 2L/a of %.3g s: of "
                       "fronts so steep no agreement is asked, since cells blunt them.",
                       o->ramp, o->back_and_forth);
+    }
+    if (o->report.switches > 0) {
+        kent_text_add(&words,
+                      " Devices opened or shut by themselves, %zu times: a slam sends "
+                      "a front, which cells blunt.",
+                      o->report.switches);
     }
     kent_text_add(&words, " Second method: %zu cells of at most %s.", o->report.cells,
                   kent_shown_with_unit(KENT_LENGTH, page->view.units, o->cell).text);
@@ -207,6 +224,18 @@ static void say_left_out(const kent_page *page, size_t index)
         kent_view_say(&page->view, "", &words);
     }
     kent_text_clear(&words);
+}
+
+/* Whether there is nothing to compare, and why. */
+static bool say_stopped(const kent_page *page, size_t index)
+{
+    const kent_opinion *o = &page->opinions[index];
+    kent_text words = {0};
+    if (o->stopped.what[0] == '\0') return false;
+    kent_text_add(&words, "Nothing is compared: %s.", o->stopped.what);
+    kent_view_say(&page->view, "", &words);
+    kent_text_clear(&words);
+    return true;
 }
 
 static void say_first(const kent_page *page)
@@ -241,6 +270,7 @@ kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinion
     for (size_t i = 0; i < r->scenario_count; i++) {
         kent_text_add(&out, "\n");
         say_title(&page, i);
+        if (say_stopped(&page, i)) continue;
         print_table(&page, i);
         say_verdict(&page, i);
         say_left_out(&page, i);

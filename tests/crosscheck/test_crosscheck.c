@@ -122,6 +122,38 @@ static void what_is_left_out_is_said(void **state)
     assert_true(o.report.below_vapour ==
                 (strstr(o.left_out.text[0], "falls below") != NULL));
     kent_opinion_clear(&o);
+    b.model->points[1].at.z = 100.0;
+    o = opinion_of(&b, s);
+    assert_true(o.report.below_vapour);
+    assert_non_null(strstr(o.left_out.text[0], "falls below"));
+    kent_opinion_clear(&o);
+    b.model->solver.column_separation = KENT_SEPARATION_NONE;
+    o = opinion_of(&b, s);
+    assert_true(o.report.below_vapour);
+    assert_non_null(strstr(o.left_out.text[0], "neither is right"));
+    kent_opinion_clear(&o);
+    kent_steady_free(s);
+    kent_build_clear(&b);
+}
+
+/* A level that goes nowhere has no heads; the scenario beside it goes on. */
+static void where_one_stops_the_others_go_on(void **state)
+{
+    (void)state;
+    kent_build b = one_main(3.0, 4.0);
+    const int again = kent_build_scenario(&b, "nowhere", 4.0);
+    const int e = kent_build_ramp(&b, again, KENT_EVENT_FIXED_LEVEL, 0, 1.0, 1.0, 0.0);
+    kent_steady *s = nets_steady(&b);
+    b.model->events[e].to = NAN;
+    const kent_march marches[] = {{again, 0}, {0, 0}};
+    kent_opinion o[2] = {{0}, {0}};
+    kent_error err = {0};
+    assert_int_equal(kent_crosscheck_run(b.model, &s, marches, 2, 2, o, &err), KENT_OK);
+    assert_non_null(strstr(o[0].stopped.what, "the second method stopped at 1 s"));
+    assert_string_equal(o[1].stopped.what, "");
+    assert_true(o[1].peaks[1].highest > 100.0);
+    kent_opinion_clear(&o[0]);
+    kent_opinion_clear(&o[1]);
     kent_steady_free(s);
     kent_build_clear(&b);
 }
@@ -163,6 +195,7 @@ int main(void)
         cmocka_unit_test(a_quick_closure_is_not_asked_to_agree),
         cmocka_unit_test(both_methods_agree_in_a_loop),
         cmocka_unit_test(what_is_left_out_is_said),
+        cmocka_unit_test(where_one_stops_the_others_go_on),
         cmocka_unit_test(every_refused_allocation_is_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
