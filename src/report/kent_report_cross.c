@@ -191,10 +191,11 @@ static void say_verdict(const kent_page *page, size_t index)
                       o->ramp, o->back_and_forth);
     }
     if (o->report.switches > 0) {
-        kent_text_add(&words,
-                      " Devices opened or shut by themselves, %zu times: a slam sends "
-                      "a front, which cells blunt.",
-                      o->report.switches);
+        kent_text_add(
+            &words,
+            " Devices opened or shut by themselves (%zu changes): a slam sends "
+            "a front, which cells blunt.",
+            o->report.switches);
     }
     kent_text_add(&words, " Second method: %zu cells of at most %s.", o->report.cells,
                   kent_shown_with_unit(KENT_LENGTH, page->view.units, o->cell).text);
