@@ -206,29 +206,32 @@ void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
     }
 }
 
-/* drag_at without its cost; gap: m, of either sign. */
-static double drag_near(const kent_drag_span *d, double gap)
+/* drag_at without its cost. lines: those of d, at hand; reynolds: over 2000. */
+static inline double drag_near(const kent_drag_span *d, kent_drag_line *lines,
+                               double reynolds)
 {
-    const uint64_t bits = bits_of(fabs(gap) * d->reynolds_per_metre);
-    kent_drag_line *line = &d->line[bin_of(bits)];
+    const uint64_t bits = bits_of(reynolds);
+    kent_drag_line *line = &lines[bin_of(bits)];
     if (line->at_nil == 0.0) *line = line_over(d, bin_of(bits));
     return line->at_nil + line->slope * place_in_bin(bits);
-}
-
-void kent_drag_follow(const kent_drag *d, size_t span, size_t n,
-                      const double *restrict gap, double *restrict k)
-{
-    for (size_t i = 0; d->follows && i < n; i++) {
-        k[i] = drag_near(&d->spans[span], gap[i]);
-    }
 }
 
 static void follow_flow(const kent_drag_span *d, size_t n, const double *restrict p,
                         const double *restrict m, double *restrict k)
 {
-    const kent_drag_span own = *d; /* nothing written can be part of it */
+    const double scale = d->reynolds_per_metre;
+    kent_drag_line *const lines = d->line;
     for (size_t i = 0; i < n; i++) {
-        k[i] = drag_near(&own, p[i] - m[i]);
+        k[i] = drag_near(d, lines, fabs(p[i] - m[i]) * scale);
+    }
+}
+
+void kent_drag_follow(const kent_drag *d, size_t span, size_t n,
+                      const double *restrict gap, double *restrict k)
+{
+    const kent_drag_span *of = &d->spans[span];
+    for (size_t i = 0; d->follows && i < n; i++) {
+        k[i] = drag_near(of, of->line, fabs(gap[i]) * of->reynolds_per_metre);
     }
 }
 
