@@ -455,51 +455,31 @@ void kent_cavities_solve(kent_cavities *c, kent_waves *w, double time)
 
 /* ---- sweep ----------------------------------------------------------------------- */
 
-/* What flows either way from the nodes of a piece, and its friction. */
-typedef struct kent_sides {
-    double gap[KENT_BLOCK], k[KENT_BLOCK]; /* m: 2 B Q, 15.8; 1/m */
-} kent_sides;
-
-static void take_sides(const kent_cavities *c, const kent_drag *drag,
-                       const kent_waves *w, const kent_piece *at, kent_sides *right,
-                       kent_sides *left)
-{
-    const size_t n = at->end - at->first;
-    const size_t span = (size_t)c->span_index[at->span - c->spans];
-    for (size_t j = 0; j < n; j++) {
-        const size_t i = at->first + j;
-        right->gap[j] = 2.0 * (c->head[i] - w->m[i]);
-        left->gap[j] = 2.0 * (w->p[i] - c->head[i]);
-        right->k[j] = left->k[j] = w->k[i];
-    }
-    kent_drag_follow(drag, span, n, right->gap, right->k);
-    kent_drag_follow(drag, span, n, left->gap, left->k);
-}
-
 static int64_t sweep_piece(const kent_cavities *c, const kent_drag *drag, kent_waves *w,
                            const kent_piece *at)
 {
+    const size_t span = (size_t)c->span_index[at->span - c->spans];
     const bool implicit = at->first >= w->explicit_total;
     const double limit = implicit ? DBL_MAX : KENT_EXPLICIT_LIMIT;
-    kent_sides right, left;
     int64_t beyond = 0;
 
-    take_sides(c, drag, w, at, &right, &left);
-    for (size_t j = 0, i = at->first; i < at->end; i++, j++) {
+    for (size_t i = at->first; i < at->end; i++) {
         const double p = w->p[i], m = w->m[i], twice = 2.0 * c->head[i];
-        const double kr = right.k[j] * fabs(right.gap[j]);
-        const double kl = left.k[j] * fabs(left.gap[j]);
+        const double right = twice - 2.0 * m, left = 2.0 * p - twice; /* 2 B Q, 15.8 */
+        const double k_right = kent_drag_of(drag, span, right, w->k[i]);
+        const double k_left = kent_drag_of(drag, span, left, w->k[i]);
+        const double kr = k_right * fabs(right), kl = k_left * fabs(left);
         w->twice_highest[i] = fmax(w->twice_highest[i], twice);
         w->twice_lowest[i] = fmin(w->twice_lowest[i], twice);
         if (!(kr <= limit) || !(kl <= limit)) { /* for the marcher to find */
-            const kent_sides *worst = kr > kl ? &right : &left;
-            w->k[i] = worst->k[j];
-            w->p[i] = 0.5 * (twice + worst->gap[j]);
-            w->m[i] = 0.5 * (twice - worst->gap[j]);
+            const double d = kr > kl ? right : left;
+            w->k[i] = kr > kl ? k_right : k_left;
+            w->p[i] = 0.5 * (twice + d);
+            w->m[i] = 0.5 * (twice - d);
             beyond++;
             continue;
         }
-        const double fr = kr * right.gap[j], fl = kl * left.gap[j];
+        const double fr = kr * right, fl = kl * left;
         w->p[i] = twice - m - (implicit ? fr / (1.0 + 2.0 * kr) : fr);
         w->m[i] = twice - p + (implicit ? fl / (1.0 + 2.0 * kl) : fl);
     }

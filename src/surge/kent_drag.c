@@ -226,13 +226,11 @@ static void follow_flow(const kent_drag_span *d, size_t n, const double *restric
     }
 }
 
-void kent_drag_follow(const kent_drag *d, size_t span, size_t n,
-                      const double *restrict gap, double *restrict k)
+double kent_drag_of(const kent_drag *d, size_t span, double gap, double otherwise)
 {
     const kent_drag_span *of = &d->spans[span];
-    for (size_t i = 0; d->follows && i < n; i++) {
-        k[i] = drag_near(of, of->line, fabs(gap[i]) * of->reynolds_per_metre);
-    }
+    if (!d->follows) return otherwise;
+    return drag_near(of, of->line, fabs(gap) * of->reynolds_per_metre);
 }
 
 void kent_drag_refresh(kent_drag *d, kent_waves *w)

@@ -46,9 +46,8 @@ void kent_drag_start(kent_drag *d, const kent_model *m, const kent_steady *s,
  * between the edges of its bin. Does nothing otherwise. */
 void kent_drag_refresh(kent_drag *d, kent_waves *w);
 
-/* The same of n flows in one span, 2 B Q in m, of either sign: beside a cavity they are
- * not those of the waves. Leaves k where it does not follow the flow. */
-void kent_drag_follow(const kent_drag *d, size_t span, size_t n,
-                      const double *restrict gap, double *restrict k);
+/* The same of one flow in a span, 2 B Q in m, of either sign: beside a cavity it is not
+ * that of the waves. otherwise: where k does not follow the flow. */
+double kent_drag_of(const kent_drag *d, size_t span, double gap, double otherwise);
 
 #endif
