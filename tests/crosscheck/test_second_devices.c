@@ -174,6 +174,35 @@ static void tripped_pump_behind_an_ideal_check_valve(void **state)
     kent_build_clear(&b);
 }
 
+/* As cells get shorter the second method comes to the march: at the pump, after the
+ * wave that its check valve stops has come back. */
+static void a_tripped_pump_s_peaks_come_together(void **state)
+{
+    (void)state;
+    kent_build b = pumped_main(KENT_CHECK_IDEAL);
+    const kent_watch pump = {0, 0.0};
+    const double cells[] = {40.0, 20.0, 10.0};
+    double highest = -INFINITY, before = INFINITY;
+    kent_error err = {0};
+    kent_trace trace = {0};
+    kent_build_derive(&b);
+    march m = march_new(&b, 15.0, 0, &pump, 1, 1);
+    do {
+        assert_int_equal(kent_marcher_advance(m.marcher, 1, &trace, &err), 1);
+        highest = fmax(highest, trace.head[0]);
+    } while (trace.time[0] < 15.0);
+    for (size_t i = 0; i < sizeof cells / sizeof cells[0]; i++) {
+        kent_second_peak peaks[3];
+        (void)nets_run(&b, m.steady, 0, 0.0, (kent_mesh){cells[i], 1, 1.0}, peaks);
+        const double apart = fabs(peaks[0].highest - highest);
+        print_message("cells of %g m: %.3f m apart\n", cells[i], apart);
+        assert_true(apart < 0.8 * before);
+        before = apart;
+    }
+    march_clear(&m);
+    kent_build_clear(&b);
+}
+
 static void tripped_pump_that_turns_back(void **state)
 {
     (void)state;
@@ -262,6 +291,7 @@ int main(void)
         cmocka_unit_test(level_that_rises),
         cmocka_unit_test(burst),
         cmocka_unit_test(tripped_pump_behind_an_ideal_check_valve),
+        cmocka_unit_test(a_tripped_pump_s_peaks_come_together),
         cmocka_unit_test(tripped_pump_that_turns_back),
         cmocka_unit_test(one_pump_of_two_trips_with_a_late_check_valve),
         cmocka_unit_test(late_check_valve_close_to_a_vessel),
