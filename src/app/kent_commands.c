@@ -206,7 +206,11 @@ static kent_exit do_job(session *s)
         .scenario_count = s->scenario_count,
         .threads = s->options->threads,
     };
-    const kent_status status = kent_job_run(s->model, &job, &s->results, &s->error);
+    kent_status status = kent_job_run(s->model, &job, &s->results, &s->error);
+    if (!status && s->options->sensitivity) {
+        status =
+            kent_sensitivity_run(s->model, &job, &s->results->sensitivity, &s->error);
+    }
     return status ? fail(s, status) : KENT_EXIT_DONE;
 }
 
@@ -220,6 +224,9 @@ static kent_status print_results(const session *s, kent_text *text)
     case KENT_TABLE_FORMAT:
         break;
     case KENT_CSV_FORMAT:
+        if (s->results->sensitivity) {
+            return kent_report_sensitivity_csv(s->results, sink);
+        }
         return kent_report_summary_csv(s->results, &o, sink);
     case KENT_JSON_FORMAT:
         return kent_report_json(s->results, sink);

@@ -23,8 +23,9 @@ enum {
     GAVE_QUIET = 1 << 6,
     GAVE_STRICT = 1 << 7,
     GAVE_NO_FILES = 1 << 8,
-    GAVE_ALL = (1 << 9) - 1, /* of run */
-    GAVE_KEYS = 1 << 9
+    GAVE_SENSITIVITY = 1 << 9,
+    GAVE_ALL = (1 << 10) - 1, /* of run */
+    GAVE_KEYS = 1 << 10
 };
 
 typedef struct command_row {
@@ -91,7 +92,8 @@ enum {
     KEY_THREADS,
     KEY_UNITS,
     KEY_FORMAT,
-    KEY_KEYS
+    KEY_KEYS,
+    KEY_SENSITIVITY
 };
 
 static const struct argp_option OPTIONS[] = {
@@ -105,6 +107,9 @@ static const struct argp_option OPTIONS[] = {
     {"quiet", 'q', NULL, 0, "Nothing but errors on standard error", 0},
     {"strict", KEY_STRICT, NULL, 0, "Status 3 where a limit is exceeded", 0},
     {"no-files", KEY_NO_FILES, NULL, 0, "Write no folder of results", 0},
+    {"sensitivity", KEY_SENSITIVITY, NULL, 0,
+     "How peaks and blocks move with wave speed, inertia, check and air valves, times",
+     0},
     {"keys", KEY_KEYS, NULL, 0, "Print every key that a case may hold, without a CASE",
      0},
     {"version", 'V', NULL, 0, "Print the version", -1},
@@ -212,9 +217,13 @@ static void check_options(struct argp_state *state, const command_row *c, unsign
     static const struct {
         unsigned bit;
         const char *name;
-    } NAMES[] = {{GAVE_OUT, "--out"},         {GAVE_SCENARIO, "--scenario"},
-                 {GAVE_THREADS, "--threads"}, {GAVE_FORMAT, "--format"},
-                 {GAVE_STRICT, "--strict"},   {GAVE_NO_FILES, "--no-files"},
+    } NAMES[] = {{GAVE_OUT, "--out"},
+                 {GAVE_SCENARIO, "--scenario"},
+                 {GAVE_THREADS, "--threads"},
+                 {GAVE_FORMAT, "--format"},
+                 {GAVE_STRICT, "--strict"},
+                 {GAVE_NO_FILES, "--no-files"},
+                 {GAVE_SENSITIVITY, "--sensitivity"},
                  {GAVE_KEYS, "--keys"}};
     for (size_t i = 0; i < sizeof NAMES / sizeof NAMES[0]; i++) {
         if ((gave & NAMES[i].bit) && !(c->options & NAMES[i].bit)) {
@@ -267,6 +276,10 @@ static bool read_switch(int key, reading *r)
     case KEY_STRICT:
         o->strict = true;
         r->gave |= GAVE_STRICT;
+        return true;
+    case KEY_SENSITIVITY:
+        o->sensitivity = true;
+        r->gave |= GAVE_SENSITIVITY;
         return true;
     case KEY_KEYS:
         o->keys = true;

@@ -45,7 +45,7 @@ typedef struct kent_options {
     kent_system units;
     unsigned threads; /* 0: as many as there are processors */
     kent_format format;
-    bool wide, quiet, strict, no_files;
+    bool wide, quiet, strict, no_files, sensitivity;
     bool keys; /* check: the key table, no case */
 } kent_options;
 

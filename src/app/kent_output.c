@@ -66,6 +66,11 @@ static kent_status write_json(const output_file *f, kent_sink sink)
     return kent_report_json(f->results, sink);
 }
 
+static kent_status write_sensitivity(const output_file *f, kent_sink sink)
+{
+    return kent_report_sensitivity_csv(f->results, sink);
+}
+
 static kent_status write_history(const output_file *f, kent_sink sink)
 {
     return kent_report_history_csv(f->results, f->scenario, sink);
@@ -103,6 +108,10 @@ kent_status kent_output_fill(const kent_results *r, const kent_report_options *o
     kent_status status = write_file(&f, "summary.csv", folder, err);
     f.write = write_json;
     if (!status) status = write_file(&f, KENT_OUTPUT_MARKER, folder, err);
+    f.write = write_sensitivity;
+    if (!status && r->sensitivity) {
+        status = write_file(&f, "sensitivity.csv", folder, err);
+    }
     for (size_t i = 0; !status && i < r->scenario_count; i++) {
         const kent_scenario_result *s = &r->scenarios[i];
         const kent_march march = {s->scenario, s->state};

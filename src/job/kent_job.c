@@ -23,6 +23,7 @@ typedef struct kent_march_plan {
     kent_scenario_result *coarse; /* [scenario_count], peaks only */
     kent_error *errors;           /* [jobs] */
     kent_status *statuses;        /* [jobs] */
+    bool one_grid;
 } kent_march_plan;
 
 static size_t plan_grids(const kent_march_plan *plan)
@@ -70,7 +71,7 @@ static kent_status plan_make_grids(kent_march_plan *plan, kent_error *err)
             fmax(longest, m->scenarios[plan->results->scenarios[i].scenario].duration);
     }
     kent_status status = kent_grid_plan(m, longest, &plan->grid[COARSE], err);
-    if (!status && m->solver.grid_check) {
+    if (!status && m->solver.grid_check && !plan->one_grid) {
         status = kent_grid_refine(plan->grid[COARSE], m->span_count, 2,
                                   &plan->grid[FINE], err);
     }
@@ -210,7 +211,7 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     kent_results *r = kent_alloc(1, sizeof *r);
     if (!r) return kent_error_nomem(err);
     r->model = m;
-    kent_march_plan plan = {.model = m, .results = r};
+    kent_march_plan plan = {.model = m, .results = r, .one_grid = options->one_grid};
 
     copy_notes(&m->cautions, &r->cautions);
     kent_status status = choose_marches(&plan, options, err);

@@ -77,6 +77,30 @@ typedef struct kent_limit {
     bool for_comparison; /* it decides nothing */
 } kent_limit;
 
+/* What a design comes to at one fitting, in few numbers. */
+typedef struct kent_gauge {
+    double highest, lowest; /* Pa gauge, of all marches that decide; NAN: none */
+    bool held;              /* needing nothing counts */
+    kent_block_type type;
+    double area;         /* m2 that a bearing block is asked for; NAN: none */
+    double volume;       /* m3 of concrete, a face of its own included; NAN: none */
+    double length;       /* m restrained; NAN: none */
+    kent_name governing; /* its load case, as printed; empty: none */
+} kent_gauge;
+
+enum { KENT_LESS, KENT_MORE, KENT_WAYS };
+
+/* How a design moves with what nobody knows well: each run against one like it with
+ * nothing moved, all on the coarser grid. */
+typedef struct kent_sensitivity {
+    size_t fitting_count;
+    kent_gauge *base; /* [fitting_count] */
+    kent_gauge
+        *varied[KENT_VARIES][KENT_WAYS]; /* [fitting_count]; NULL: it tells nothing
+                                            here, and was not run; or it stopped: */
+    kent_error stopped[KENT_VARIES][KENT_WAYS]; /* a march that could not go on */
+} kent_sensitivity;
+
 typedef struct kent_results {
     const kent_model *model; /* the caller's; must outlive the results */
     kent_steady **steadies;  /* [steady_count], by state */
@@ -93,6 +117,7 @@ typedef struct kent_results {
     kent_notes cautions; /* of the case and the runs */
     bool limit_exceeded; /* one of limits, for a scenario that decides, or a fitting
                             nothing can hold: --strict */
+    kent_sensitivity *sensitivity; /* NULL: not asked for */
 } kent_results;
 
 typedef struct kent_job_options {
@@ -100,6 +125,7 @@ typedef struct kent_job_options {
                              NULL: all */
     size_t scenario_count;
     unsigned threads; /* 0: as many as there are processors */
+    bool one_grid;    /* no grid check, whatever the case says */
 } kent_job_options;
 
 /* What to start where so many were asked for: that many, or, of 0, one for each
@@ -109,5 +135,12 @@ unsigned kent_job_threads(unsigned asked);
 kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
                          kent_results **out, kent_error *err);
 void kent_results_free(kent_results *r);
+
+/* The job again with everything moved that kent_vary names, less and more, one run at a
+ * time, of the same scenarios. A variation whose march stops says so in its place; all
+ * else that fails, fails. */
+kent_status kent_sensitivity_run(const kent_model *m, const kent_job_options *options,
+                                 kent_sensitivity **out, kent_error *err);
+void kent_sensitivity_free(kent_sensitivity *s);
 
 #endif

@@ -14,6 +14,7 @@ void kent_results_free(kent_results *r)
     kent_loads_free(r->loads);
     kent_steady_free_states(r->steadies, r->steady_count);
     free(r->limits);
+    kent_sensitivity_free(r->sensitivity);
     kent_notes_clear(&r->cautions);
     free(r);
 }

@@ -846,6 +846,46 @@ kent_status kent_model_derive(kent_model *m, kent_complaints *complaints);
 kent_model *kent_model_in_state(const kent_model *m, int state, const double *capacity);
 void kent_model_view_free(kent_model *view);
 
+/* ---- variations ------------------------------------------------------------------ */
+
+/* What is moved to see how much a design hangs on it. */
+typedef enum kent_vary {
+    KENT_VARY_WAVE_SPEED,  /* of every pipe */
+    KENT_VARY_INERTIA,     /* of every pump */
+    KENT_VARY_CHECK_DELAY, /* of pumps' check valves and those in line */
+    KENT_VARY_AIR_VALVES,  /* coefficients of admission and release */
+    KENT_VARY_EVENT_TIME,  /* how long every event takes but those of fixed levels, and
+                              laws that begin again */
+    KENT_VARIES
+} kent_vary;
+
+typedef struct kent_variation {
+    kent_vary what;
+    bool more;     /* the larger value of the two */
+    double factor; /* on what it is in the case */
+} kent_variation;
+
+/* s: what an ideal check valve is given where delays are varied upwards. */
+#define KENT_VARY_IDEAL_DELAY 0.5
+
+/* The two that belong to each: 0.9 and 1.1 of wave speeds, 0.5 and 1.5 of inertia, no
+ * delay and twice of check valves, 0.75 and 1.25 of air valves, 0.8 and 1.2 of times.
+ * Common practice, no source. */
+kent_variation kent_variation_of(kent_vary what, bool more);
+const char *kent_vary_word(kent_vary what); /* "wave speed" ... */
+
+/* Whether it can move any result of m: not an inertia where no scenario trips a pump.
+ */
+bool kent_variation_tells(const kent_model *m, kent_variation v);
+
+/* The main with one thing moved: shares all else with m, which must outlive it. A
+ * scenario lasts as much longer as its last event does. Free it with
+ * kent_model_varied_free alone. NULL: no memory. */
+kent_model *kent_model_varied(const kent_model *m, kent_variation v);
+void kent_model_varied_free(kent_model *view);
+
+/* ---- asking a model -------------------------------------------------------------- */
+
 /* Whether a scenario (-1: none) leaves a device out. */
 bool kent_device_is_left_out(const kent_model *m, size_t device, int scenario);
 

@@ -53,6 +53,10 @@ void kent_json_put_limits(kent_writer *w);
 void kent_json_put_screening(kent_writer *w, size_t march);
 void kent_json_put_swings(kent_writer *w, size_t march);
 
+/* r->sensitivity, which must be there: a row per fitting and variation, first with
+ * nothing moved. */
+void kent_json_put_sensitivity(kent_writer *w);
+
 /* Scenarios beside those whose events they repeat: pairs, the other one first. */
 void kent_json_put_twins(kent_writer *w);
 

@@ -33,6 +33,9 @@ kent_status kent_report_history_csv(const kent_results *r, size_t scenario,
 kent_status kent_report_profile_csv(const kent_results *r, size_t scenario,
                                     kent_sink sink);
 
+/* A row per fitting and variation, SI; r->sensitivity must be there. */
+kent_status kent_report_sensitivity_csv(const kent_results *r, kent_sink sink);
+
 /* `check`: what was understood. steadies: [state_count] of each state, NULL where none
  * was found; NULL: of no state. */
 kent_status kent_report_check(const kent_model *m, kent_steady *const *steadies,

@@ -533,6 +533,7 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     kent_json_put_twins(&w);
     kent_json_put_text(&w, ",\n\"limit_exceeded\": ");
     kent_json_put(&w, json_boolean(r->limit_exceeded));
+    if (r->sensitivity) kent_json_put_sensitivity(&w);
     kent_json_put_text(&w, ",\n\"cautions\": ");
     kent_json_put(&w, kent_json_notes(&r->cautions));
     kent_json_put_text(&w, "}\n");

@@ -572,6 +572,7 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
     kent_page_screening(&page);
     kent_page_swings(&page);
     if (o->wide) print_rest(&page);
+    if (r->sensitivity) kent_sensitivity_table(r, o, &out);
     print_end(&page);
     status = kent_sink_flush(sink, &out);
 done:

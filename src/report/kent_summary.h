@@ -10,6 +10,10 @@
 void kent_summary_table(const kent_results *r, const kent_report_options *o,
                         const size_t *order, kent_text *out);
 
+/* What moves as one thing at a time does: r->sensitivity, which must be there. */
+void kent_sensitivity_table(const kent_results *r, const kent_report_options *o,
+                            kent_text *out);
+
 /* A field of RFC 4180: quoted where it holds a comma, a quote or a line break. */
 void kent_summary_field(kent_text *out, const char *text);
 

@@ -73,6 +73,7 @@ class App(unittest.TestCase):
                 (["run", "main.cfg", "--nonsense"], "nonsense"),
                 (["run", "main.cfg", "--out", "x", "--no-files"], "exclude"),
                 (["check", "main.cfg", "--strict"], "--strict"),
+                (["explain", "main.cfg", "--sensitivity"], "--sensitivity"),
                 (["catalogue", "pips"], "pipes"),
                 (["draw", "main.cfg", "plan"], "not in this version")]:
             with self.subTest(args=args):
@@ -206,6 +207,27 @@ class App(unittest.TestCase):
             r = self.call("run", "main.cfg", "--format", form, "--out", "here")
             self.assertEqual(r.returncode, 0)
             self.assertEqual(r.stdout, (self.dir / "here" / name).read_text())
+
+    def test_sensitivity_is_a_table_a_file_and_rows_of_json(self):
+        plain = self.call("run", "main.cfg", "--no-files")
+        r = self.call("run", "main.cfg", "--sensitivity", "--out", "here")
+        self.assertEqual(r.returncode, 0)
+        self.assertIn("wave speed -10/+10 %, event times -20/+20 %", r.stdout)
+        self.assertNotIn("Sensitivity", plain.stdout)
+        self.assertEqual({p.name for p in (self.dir / "here").iterdir()},
+                         FILES | {"sensitivity.csv"})
+        text = (self.dir / "here" / "sensitivity.csv").read_text()
+        rows = list(csv.DictReader(text.splitlines()))
+        data = json.loads((self.dir / "here" / "results.json").read_text())
+        self.assertEqual([x["fitting"] for x in rows],
+                         [x["fitting"] for x in data["sensitivity"]])
+        for a, b in zip(rows, data["sensitivity"]):
+            self.assertAlmostEqual(float(a["highest_Pa"]), b["highest_Pa"], delta=1e-3)
+        r = self.call("run", "main.cfg", "--sensitivity", "--no-files", "--format=csv")
+        self.assertEqual((r.returncode, r.stdout), (0, text))
+        self.assertEqual(self.left(), {"here"})
+        r = self.call("run", "main.cfg", "--out", "here")
+        self.assertEqual({p.name for p in (self.dir / "here").iterdir()}, FILES)
 
     def test_runs_repeat_to_the_bit_whatever_the_threads(self):
         one = self.call("run", "main.cfg", "--format=json", "--no-files", "--threads=1")

@@ -170,14 +170,14 @@ static void a_rating_is_held_against_water_at_rest_too(void **state)
     kent_build_derive(&b);
     const int none = 0;
     b.model->pipes[0].pressure_rating = 3.8e5; /* Pa */
-    kent_results *r = run(&b, &(kent_job_options){&none, 0, 1});
+    kent_results *r = run(&b, &(kent_job_options){.scenarios = &none, .threads = 1});
     assert_int_equal(r->scenario_count, 0);
     assert_true(a_caution_holds(&r->cautions, "at E in static"));
     assert_true(r->limit_exceeded);
     kent_results_free(r);
 
     b.model->pipes[0].pressure_rating = 4.0e5;
-    r = run(&b, &(kent_job_options){&none, 0, 1});
+    r = run(&b, &(kent_job_options){.scenarios = &none, .threads = 1});
     assert_false(a_caution_holds(&r->cautions, "at E in static"));
     kent_results_free(r);
     kent_build_clear(&b);
@@ -190,7 +190,8 @@ static void a_peak_at_the_very_end_asks_for_a_longer_run(void **state)
     b.model->scenarios[1].duration = 5.0; /* s: the slow valve is still moving */
     kent_build_derive(&b);
     const int slow = 1;
-    kent_results *r = run(&b, &(kent_job_options){&slow, 1, 1});
+    kent_results *r = run(
+        &b, &(kent_job_options){.scenarios = &slow, .scenario_count = 1, .threads = 1});
     assert_int_equal(r->scenario_count, 1);
     assert_true(a_caution_holds(&r->cautions, "run it longer"));
     kent_results_free(r);

@@ -157,7 +157,9 @@ static void nothing_moves_in_any_state_without_an_event(void **state)
     kent_build b = main_with_states();
     kent_build_scenario(&b, "still", 20.0);
     const int still = 1;
-    kent_results *r = run(&b, &(kent_job_options){&still, 1, 1});
+    kent_results *r = run(
+        &b,
+        &(kent_job_options){.scenarios = &still, .scenario_count = 1, .threads = 1});
     assert_int_equal(r->scenario_count, STATES);
     for (size_t i = 0; i < STATES; i++) {
         const kent_scenario_result *s = &r->scenarios[i];

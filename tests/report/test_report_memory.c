@@ -59,6 +59,10 @@ static kent_status profile(const kent_results *r, kent_sink sink)
 {
     return kent_report_profile_csv(r, 0, sink);
 }
+static kent_status sensitivity(const kent_results *r, kent_sink sink)
+{
+    return kent_report_sensitivity_csv(r, sink);
+}
 static kent_status explain(const kent_results *r, kent_sink sink)
 {
     return kent_report_explain(r, 0, &OPTIONS, sink);
@@ -78,8 +82,14 @@ static void every_refused_allocation_is_said(void **state)
 {
     (void)state;
     kent_status (*const REPORTS[])(const kent_results *r, kent_sink sink) = {
-        tables, wide, summary, json, history, profile, explain, check, keys};
+        tables,  wide,        summary, json,  history,
+        profile, sensitivity, explain, check, keys};
     kent_mixed mixed = kent_mixed_new(false);
+    kent_error err = {0};
+    assert_int_equal(kent_sensitivity_run(mixed.build.model,
+                                          &(kent_job_options){.threads = 1},
+                                          &mixed.results->sensitivity, &err),
+                     KENT_OK);
     for (size_t i = 0; i < sizeof REPORTS / sizeof REPORTS[0]; i++) {
         task t = {mixed.results, REPORTS[i]};
         assert_true(kent_allocations_needed(run, &t) > 0);
