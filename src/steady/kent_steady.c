@@ -12,8 +12,7 @@
 
 enum {
     ROUNDS_TOGETHER = 10, /* rounds in which every contradicted link moves */
-    ROUNDS = 300,         /* and then one at a time, to this many in all */
-    STRIDE = 7919         /* a prime: from round to round, where looking starts */
+    ROUNDS = 300          /* and then one at a time, to this many in all */
 };
 
 void kent_steady_free(kent_steady *s)
@@ -167,6 +166,13 @@ static kent_status tell_switching(const kent_equations *eq, size_t which,
                           iterations, link_name(eq, which));
 }
 
+/* A number that looks like chance, the same every time. */
+static size_t scattered(int round)
+{
+    const uint64_t mixed = ((uint64_t)round + 1U) * UINT64_C(0x9E3779B97F4A7C15);
+    return (size_t)((mixed ^ (mixed >> 29)) * UINT64_C(0xBF58476D1CE4E5B9) >> 33);
+}
+
 /* Puts links under the laws that the solution x calls for. In late rounds only the
  * first one that is found changes, looking from another one each time, so that they
  * cannot chase each other for ever. Returns whether any changed; one of them is link
@@ -179,7 +185,7 @@ static bool switch_laws(kent_equations *eq, const double *x, int round, size_t *
     bool any = false;
 
     for (size_t k = 0; k < count && !(one && any); k++) {
-        const size_t i = ((size_t)round * STRIDE + k) % count;
+        const size_t i = (scattered(round) + k) % count;
         const bool changed = i < outflows ? kent_outlet_switch(eq, x, i)
                                           : kent_duty_switch(eq, x, i - outflows);
         if (!changed) continue;
