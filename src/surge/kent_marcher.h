@@ -85,15 +85,15 @@ void kent_marcher_hollow(const kent_marcher *k, int span, double *volume);
 /* A cavity that opened at a grid point or an end. */
 typedef struct kent_cavity {
     int span;          /* of the grid point; -1: at a node */
-    double chainage;   /* m from the span's start */
     int node;          /* -1: at a grid point inside a span */
+    double chainage;   /* m from the span's start */
     double largest;    /* m3 */
     double largest_at; /* s */
     double opened;     /* s, first */
     double closed;     /* s, first time that it collapsed; NAN: not yet */
     double collapsed;  /* s, last; NAN: not yet */
-    int count;         /* times that it opened */
     double pulse;      /* m: largest rise of head on a collapse; NAN: none yet */
+    int count;         /* times that it opened */
 } kent_cavity;
 
 /* Every place where a cavity opened so far, largest first; at most `most` are written

@@ -37,8 +37,9 @@ static double time_engine(const kent_model *m, const kent_steady *s, const kent_
     (void)kent_marcher_advance(k, 1, &trace, &err);
     const double start = seconds();
     for (int done = 0; done < STEPS; done += BLOCK) {
-        if (kent_marcher_advance(k, BLOCK, &trace, &err) != BLOCK)
+        if (kent_marcher_advance(k, BLOCK, &trace, &err) != BLOCK) {
             fail_msg("%s", err.what);
+        }
     }
     const double took = seconds() - start;
     kent_marcher_free(k);

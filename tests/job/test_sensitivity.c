@@ -271,8 +271,9 @@ static void a_march_that_stops_says_so_in_its_place(void **state)
         kent_build_pipe(&b, "A", "R T E", 0.5, 1000.0);
         kent_build_fixed_level(&b, "R", 60.0);
         kent_build_surge_tank(&b, "ST", "T", 1.0);
-        if (k == 2)
+        if (k == 2) {
             b.model->surge_tanks[0].bottom_level = 0.5 * (lowest[0] + lowest[1]);
+        }
         const int draw = kent_build_outflow(&b, "E", 0.0);
         kent_build_ramp(&b, kent_build_scenario(&b, "draw", 60.0), KENT_EVENT_OUTFLOW,
                         draw, 1.0, k == 1 ? 16.0 : 20.0, 0.2);

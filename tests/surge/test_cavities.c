@@ -62,7 +62,7 @@ static void first_cavity(const line *l, double opens, double lasts, double after
     kent_build b = line_build(l, 10.0);
     const kent_watch valve = {0, l->length};
     march m = march_new(&b, 10.0, 0, &valve, 1, 1);
-    kent_cavity cavity;
+    kent_cavity cavity = {0};
     kent_trace trace;
     kent_error err = {0};
     const double later = 0.5 * (opens + lasts + pulse_at) - 0.01 * opens;
@@ -153,7 +153,7 @@ typedef struct instant {
 
 static void take(const march *m, int span, instant *at)
 {
-    double before[MOST];
+    double before[MOST] = {0.0};
     at->reaches = (size_t)m->grid->reaches[span];
     assert_true(at->reaches < MOST);
     at->step = m->grid->step;
@@ -770,7 +770,7 @@ static void devices_tell_while_the_water_is_parted(void **state)
     const kent_watch watches[] = {{0, beside}, {1, 0.0}};
     kent_trace trace;
     kent_error err = {0};
-    kent_cavity cavity;
+    kent_cavity cavity = {0};
     double most = 0.0; /* m3/s */
     kent_build_surge_tank(&b, "ST", "P", 0.5);
     march m = march_new(&b, 10.0, 0, watches, 2, 1);
@@ -793,7 +793,7 @@ static void devices_tell_while_the_water_is_parted(void **state)
 static void the_grid_hardly_matters(void **state)
 {
     (void)state;
-    double peak[3], when[3];
+    double peak[3] = {0.0}, when[3] = {0.0};
     for (int i = 0; i < 3; i++) {
         line l = RIG;
         l.reaches = 64 << i;

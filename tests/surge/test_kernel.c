@@ -102,18 +102,20 @@ static void a_watching_sweep_marks_what_may_be_low(void **state)
             floors[b] = (kent_floor){-1e9, -1e9};
         }
         floors[1].p = want.p[KENT_BLOCK + 6] + 1e-9; /* one inside */
-        floors[2].p = want.p[2 * KENT_BLOCK - 1];    /* one over its edge, not below */
-        floors[2].m = want.m[3 * KENT_BLOCK] + 1e-9;
+        floors[2].p =
+            want.p[(size_t)2 * KENT_BLOCK - 1]; /* one over its edge, not below */
+        floors[2].m = want.m[(size_t)3 * KENT_BLOCK] + 1e-9;
         for (int b = 0; b < BLOCKS; b++) {
             for (int n = KENT_BLOCK * b - 1; n <= KENT_BLOCK * (b + 1); n++) {
                 const bool inside = n >= KENT_BLOCK * b && n < KENT_BLOCK * (b + 1);
                 if (n < 0 || n >= N) continue;
-                if (inside && want.k[n] * fabs(want.p[n] - want.m[n]) > limit)
-                    mark[b] = 1;
-                if ((inside || n < KENT_BLOCK * b) && want.p[n] < floors[b].p)
-                    mark[b] = 1;
-                if ((inside || n > KENT_BLOCK * b) && want.m[n] < floors[b].m)
-                    mark[b] = 1;
+                const bool over =
+                    inside && want.k[n] * fabs(want.p[n] - want.m[n]) > limit;
+                const bool low_p =
+                    (inside || n < KENT_BLOCK * b) && want.p[n] < floors[b].p;
+                const bool low_m =
+                    (inside || n > KENT_BLOCK * b) && want.m[n] < floors[b].m;
+                if (over || low_p || low_m) mark[b] = 1;
             }
         }
         assert_true(
