@@ -291,7 +291,7 @@ size_t kent_shown_parts(const kent_fitting_loads *loads, const kent_holding *hol
     parts[0] = (kent_part){holding->sense, holding->governing, false,
                            holding->factor_reached, holding->utilisation};
     if (!holding->held || !b->has_face) return 1;
-    const kent_sense own = b->type == KENT_BLOCK_GRAVITY ? KENT_UPWARD : KENT_DOWNWARD;
+    const kent_sense own = b->sense;
     const int sideways = holding->by_sense[KENT_SIDEWAYS];
     const double asked = sideways >= 0 ? loads->cases[sideways].safety_factor : NAN;
     const kent_part body = {own, holding->by_sense[own], false, b->factor_reached,
@@ -368,7 +368,8 @@ static kent_shown block_words(const kent_block *b, kent_system system, kent_room
     const double sides[3] = {b->width, b->height, b->thickness};
     if (b->type == KENT_BLOCK_GRAVITY) {
         const double volume = kent_units_shown(KENT_VOLUME, system, b->volume);
-        return shown("gravity %.20s %.20s", kent_shown_number(volume, 1).text,
+        const int decimals = volume < 0.095 ? 3 : volume < 0.95 ? 2 : 1;
+        return shown("gravity %.20s %.20s", kent_shown_number(volume, decimals).text,
                      kent_shown_unit(KENT_VOLUME, system).text);
     }
     return three_sides(b->type == KENT_BLOCK_BASE ? "base " : "block ", sides, system,

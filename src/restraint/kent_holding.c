@@ -107,20 +107,34 @@ static kent_fault holding_soil_fault(const kent_holding_work *w)
     return kent_soil_counts(w->soil) ? KENT_FAULT_NONE : KENT_FAULT_SOIL;
 }
 
+/* A gravity block may stand under a thrust that is downward alone. */
+static kent_sense holding_body_sense(const kent_holding_work *w, kent_block_type type)
+{
+    switch (type) {
+    case KENT_BLOCK_GRAVITY:
+        return w->demand.load[KENT_UPWARD] > 0.0 ? KENT_UPWARD : KENT_DOWNWARD;
+    case KENT_BLOCK_BASE:
+        return KENT_DOWNWARD;
+    case KENT_BLOCK_NONE:
+    case KENT_BLOCK_BEARING:
+        break;
+    }
+    return KENT_SIDEWAYS;
+}
+
 /* What the block reaches, and which sense uses most of it. */
 static void holding_reach(kent_holding_work *w, kent_holding *h)
 {
     kent_block *b = &h->block;
-    const bool gravity = b->type == KENT_BLOCK_GRAVITY;
-    const bool base = b->type == KENT_BLOCK_BASE;
-    const kent_sense own = gravity ? KENT_UPWARD : base ? KENT_DOWNWARD : KENT_SIDEWAYS;
+    const kent_sense own = holding_body_sense(w, b->type);
 
+    b->sense = own;
     kent_block_use(b, &w->m->rules, &w->site, &w->demand, w->use);
     const kent_load_case *c = &w->loads->cases[h->by_sense[own]];
     b->utilisation = w->use[own];
     b->factor_reached = c->safety_factor / b->utilisation;
     if (b->has_face) b->face_utilisation = w->use[KENT_SIDEWAYS];
-    if (base) {
+    if (own == KENT_DOWNWARD) {
         b->bearing_pressure = w->use[KENT_DOWNWARD] * w->site.vertical;
     } else if (w->use[KENT_SIDEWAYS] > 0.0) {
         b->bearing_pressure = w->use[KENT_SIDEWAYS] * w->site.allowable;

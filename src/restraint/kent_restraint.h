@@ -90,6 +90,7 @@ typedef struct kent_block {
     double face_thickness, face_utilisation;
     double face_volume; /* m3, not in volume; 0 without a face of its own */
     bool submerged;     /* gravity, base: weight less the water it displaces */
+    kent_sense sense;   /* that the body is for, its face apart; of utilisation */
 } kent_block;
 
 typedef struct kent_leg { /* restrained length of one port */

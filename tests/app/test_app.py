@@ -438,7 +438,9 @@ class App(unittest.TestCase):
             self.assertIn(name, r.stderr)
 
     def test_every_formula_of_every_case_gives_its_printed_result(self):
-        cases = sorted((SOURCE / "cases").glob("*/*/*.cfg"))
+        # Large cases say no other formulas to a sanitizer than small ones, and take long.
+        group = "learn" if os.environ.get("KENT_SANITIZED") else "*"
+        cases = sorted((SOURCE / "cases").glob(f"{group}/*/*.cfg"))
         self.assertTrue(cases)
         worked = 0
         for case in cases:

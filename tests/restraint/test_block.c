@@ -259,6 +259,31 @@ static void a_sag_that_suction_lifts_hard_gets_a_weight_not_a_pillar(void **stat
     kent_build_clear(&b);
 }
 
+/* So little is pressed down that a base would be taller than wide, and nothing lifts.
+ */
+static void a_sag_that_hardly_presses_stands_on_what_it_presses_on(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 0.012e6}};
+    kent_build b = main_that_turns(0.0, -200.0 * tan(5.625 * DEGREE));
+    b.model->rules.least_thickness = 0.8;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, cases, 1);
+    const kent_holding *h = holding_of(&b, r, "B");
+    const double down = 2.0 * 0.012e6 * 0.25 * PI * 0.62 * 0.62 * sin(5.625 * DEGREE);
+    const double plan = h->block.width * h->block.thickness;
+
+    assert_true(h->held);
+    assert_int_equal(h->block.type, KENT_BLOCK_GRAVITY);
+    assert_int_equal(h->by_sense[KENT_UPWARD], -1);
+    assert_int_equal(h->block.sense, KENT_DOWNWARD);
+    assert_close(h->block.utilisation, 1.5 * down / (plan * 150e3), 1e-9);
+    assert_close(h->block.factor_reached * h->block.utilisation, 1.5, 1e-12);
+    assert_close(h->block.bearing_pressure, 1.5 * down / plan, 1e-9);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
+}
+
 static void a_turn_in_plan_and_profile_gets_a_weight_and_a_face(void **state)
 {
     (void)state;
@@ -512,6 +537,7 @@ int main(void)
         cmocka_unit_test(a_crest_in_ground_water_takes_more_concrete),
         cmocka_unit_test(water_counts_from_the_bottom_of_a_block_up),
         cmocka_unit_test(a_sag_gets_a_base_on_the_ground_below),
+        cmocka_unit_test(a_sag_that_hardly_presses_stands_on_what_it_presses_on),
         cmocka_unit_test(a_sag_that_suction_lifts_hard_gets_a_weight_not_a_pillar),
         cmocka_unit_test(a_turn_in_plan_and_profile_gets_a_weight_and_a_face),
         cmocka_unit_test(a_little_lift_is_left_to_the_weight_of_the_bearing_block),
