@@ -33,7 +33,7 @@ static void plastics_per_foot_per_second(void **state)
 
 /* New Mexico State University, Soils 456, notes, chapter 8: PVC of 1.66 in, 0.14 in:
  * 63.2 x 0.32 = 20.3 psi for 1 ft/s. */
-static void pvc_of_lecture_notes(void **state)
+static void pvc_of_course_notes(void **state)
 {
     (void)state;
     const double share = sqrt(4e5 / (4e5 + 294000.0 * 1.66 / 0.14));
@@ -119,7 +119,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(pvc_of_a_worked_example),
         cmocka_unit_test(plastics_per_foot_per_second),
-        cmocka_unit_test(pvc_of_lecture_notes),
+        cmocka_unit_test(pvc_of_course_notes),
         cmocka_unit_test(fast_and_slow_closure_of_a_worked_example),
         cmocka_unit_test(hoop_stress_of_a_worked_example),
         cmocka_unit_test(michaud_is_a_rigid_column_at_twice_the_mean_rate),
