@@ -170,6 +170,7 @@ void kent_fill_ground_zone(kent_filling *f, kent_record *record, size_t index)
                             .cover = kent_record_number(record, "cover"),
                             .water_table = kent_record_number(record, "water_table"),
                             .trench = kent_record_field(record, "trench")->index,
+                            .backfill = -1,
                             .place = record->place};
     if (!record->sound) return;
     if (!(z->from < z->to)) {

@@ -37,6 +37,9 @@ kent_pipe kent_pipe_blank(void)
                        .recurring_rating = NONE,
                        .test_rating = NONE,
                        .joint_rating = NONE,
+                       .nominal_size = NONE,
+                       .expansion = NONE,
+                       .long_modulus = NONE,
                        .derating = 1.0,
                        .place = {-1, 0}};
 }
@@ -50,6 +53,8 @@ kent_soil kent_soil_blank(void)
                       .factor_inside = 1.0,
                       .vertical_bearing = NONE,
                       .base_friction = NONE,
+                      .base_cohesion = NONE,
+                      .wall_friction = NONE,
                       .unit_weight = NONE,
                       .friction_angle = NONE,
                       .cohesion = NONE,
@@ -61,6 +66,26 @@ kent_soil kent_soil_blank(void)
         soil.passive_by_trench[i] = NONE;
     }
     return soil;
+}
+
+kent_stated kent_stated_blank(void)
+{
+    return (kent_stated){.slope = {.angle = NONE},
+                         .block_share = NONE,
+                         .run_length = {NONE, NONE},
+                         .contact_area = NONE};
+}
+
+kent_built kent_built_blank(void)
+{
+    return (kent_built){.width = NONE,
+                        .height = NONE,
+                        .thickness = NONE,
+                        .face_width = NONE,
+                        .face_height = NONE,
+                        .face_thickness = NONE,
+                        .body = -1,
+                        .place = {-1, 0}};
 }
 
 kent_fitting_note kent_note_blank(void)
@@ -80,6 +105,7 @@ kent_fitting_note kent_note_blank(void)
                                .branch = {.direction = {NONE, NONE, NONE},
                                           .outside_diameter = NONE,
                                           .inside_diameter = NONE},
+                               .stated = kent_stated_blank(),
                                .place = {-1, 0}};
 }
 

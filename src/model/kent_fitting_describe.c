@@ -82,8 +82,10 @@ void kent_fitting_describe_ground(const kent_model *m, const kent_fitting_note *
                          zone ? zone->water_table : nan, m->ground.water_table);
     f->soil = m->ground.soil;
     f->trench = m->ground.trench;
+    f->backfill = m->ground.backfill;
     if (zone && zone->soil >= 0) f->soil = zone->soil;
     if (zone && zone->trench >= 0) f->trench = zone->trench;
+    if (zone && zone->backfill >= 0) f->backfill = zone->backfill;
     if (point && point->soil >= 0) f->soil = point->soil;
     if (note && note->soil >= 0) f->soil = note->soil;
     f->weight = note && isfinite(note->weight) ? note->weight : 0.0;

@@ -155,6 +155,7 @@ kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chai
     kent_ground_here here = {
         .soil = ground->soil,
         .trench = ground->trench,
+        .backfill = ground->backfill,
         .zone = kent_zone_at(m, pipe, kent_model_station_at(m, pipe, chainage)),
         .cover = ground->cover,
         .water_table = ground->water_table};
@@ -163,6 +164,8 @@ kent_ground_here kent_model_ground_at(const kent_model *m, int pipe, double chai
         const kent_ground_zone *zone = &m->ground_zones[here.zone];
         if (zone->soil >= 0) here.soil = zone->soil;
         if (zone->trench >= 0) here.trench = zone->trench;
+        if (zone->backfill >= 0) here.backfill = zone->backfill;
+        here.casing = zone->casing;
         if (!isnan(zone->cover)) here.cover = zone->cover;
         if (!isnan(zone->water_table)) here.water_table = zone->water_table;
     }

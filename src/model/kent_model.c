@@ -24,17 +24,21 @@ kent_model *kent_model_new(void)
     m->ground = (kent_ground){.soil = -1,
                               .cover = (double)NAN,
                               .water_table = (double)INFINITY,
-                              .trench = -1};
+                              .trench = -1,
+                              .backfill = -1};
     m->loads.test_pressure = (double)NAN;
     m->loads.test_gauge = m->loads.future_gauge = -1;
     m->loads.test_factor = USUAL_TEST_FACTOR;
     m->loads.surge_allowance = USUAL_SURGE_ALLOWANCE;
     m->loads.future_pressure = (double)NAN;
     m->loads.static_level = (double)NAN;
+    m->loads.cooling = (double)NAN;
+    m->concrete.strength = (double)NAN;
     m->asked = (kent_asked){NAN, {NAN, NAN, NAN}, NAN};
     m->loads.place = (kent_place){-1, 0};
     for (size_t i = 0; i < sizeof m->loads.factor / sizeof m->loads.factor[0]; i++) {
         m->loads.factor[i] = (double)NAN;
+        m->loads.bearing_increase[i] = 1.0;
     }
     m->solver = (kent_solver){.friction = KENT_SURGE_QUASI_STEADY,
                               .column_separation = KENT_SEPARATION_GAS,
@@ -121,6 +125,10 @@ void kent_model_free(kent_model *m)
     free(m->ground_zones);
     free(m->obstacles);
     free(m->together);
+    free(m->closes);
+    free(m->built);
+    free(m->built_legs);
+    free(m->waivers);
     kent_notes_clear(&m->assumed);
     kent_notes_clear(&m->cautions);
     free(m);

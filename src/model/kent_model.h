@@ -85,6 +85,10 @@ typedef struct kent_pipe {
     double test_rating;      /* Pa, under the site test; NAN */
     double joint_rating;     /* Pa, of its joints, in every case; NAN */
     bool plastic;            /* its material creeps, and tires */
+    bool above_ground;       /* laid on supports: no ground holds it */
+    double nominal_size;     /* m, that its class is called by; NAN */
+    double expansion;        /* 1/K of length, of its material; NAN */
+    double long_modulus;     /* Pa, of a plastic under lasting load; NAN: modulus */
     double derating;         /* of a plastic by temperature, on every rating; 1: none */
     size_t creep_first, creep_count; /* into kent_model.creep; 0: elastic */
     kent_place place;
@@ -383,6 +387,17 @@ typedef enum kent_bearing_route {
 
 enum { KENT_DEPTH_ROWS = 8, KENT_TRENCHES = 5 };
 
+/* What ground is. All but natural ground hold nothing unless made good, each in a way
+ * of its own. */
+typedef enum kent_nature {
+    KENT_NATURAL,
+    KENT_FILL, /* not compacted under control */
+    KENT_ORGANIC,
+    KENT_EXPANSIVE,
+    KENT_LIQUEFIABLE,
+    KENT_COLLAPSIBLE /* gives way once wetted */
+} kent_nature;
+
 typedef struct kent_depth_row {
     double depth;   /* m, ground to the centre of the face */
     double bearing; /* Pa */
@@ -401,6 +416,10 @@ typedef struct kent_soil {
     double factor_inside; /* >= 1: a factor already inside the bearing */
     double vertical_bearing; /* Pa, under a base; NAN: allowable_bearing */
     double base_friction;    /* concrete on soil, coefficient; NAN */
+    double base_cohesion;    /* Pa, concrete on soil, in place of base_friction; NAN */
+    double wall_friction; /* rad, of soil on a face: Coulomb's passive pressure in place
+                             of Rankine's; NAN */
+    kent_nature nature;
     double passive_by_trench[KENT_TRENCHES]; /* passive_ratio by kind of trench; NAN */
     double unit_weight;                      /* N/m3; NAN */
     double friction_angle;                   /* rad; NAN */
@@ -418,6 +437,8 @@ typedef struct kent_ground { /* the defaults of every point */
     double water_table;      /* m below ground; INFINITY: none */
     bool wrapped;            /* pipes are in polyethylene sleeves */
     int trench;              /* 0 .. KENT_TRENCHES - 1: "type-1" ...; -1: not stated */
+    int backfill; /* soil that the trench is filled with, which rubs on the pipe; -1: as
+                     the ground, which alone bears */
 } kent_ground;
 
 /* Ground along part of a pipe; what a zone leaves out, ground says. */
@@ -428,6 +449,8 @@ typedef struct kent_ground_zone {
     double cover;       /* m; NAN */
     double water_table; /* m below ground; NAN; INFINITY: none */
     int trench;         /* -1 */
+    int backfill;       /* -1 */
+    bool casing;        /* the pipe runs in a casing: nothing holds it there */
     kent_place place;
 } kent_ground_zone;
 
@@ -448,16 +471,36 @@ typedef enum kent_test_rule {
     KENT_TEST_FACTOR            /* test_factor on the working pressure */
 } kent_test_rule;
 
+/* On which diameter the pressure of a leg acts where a joint can slip. */
+typedef enum kent_thrust_area {
+    KENT_AREA_OUTSIDE, /* of the pipe, as the seal of its joint */
+    KENT_AREA_INSIDE,  /* its bore */
+    KENT_AREA_NOMINAL  /* the size its class is called by */
+} kent_thrust_area;
+
+/* A load case that a case says it does without, and why. */
+typedef struct kent_waiver {
+    char what[16]; /* "test", "static", "shut-off" or "surge" */
+    char reason[160];
+    kent_place place;
+} kent_waiver;
+
 typedef struct kent_loads {
     kent_test_rule test_rule;
-    double test_pressure;   /* Pa, of KENT_TEST_FIXED; NAN: no test case */
-    int test_gauge;         /* point where it is read; -1 */
-    double test_factor;     /* of KENT_TEST_FACTOR */
-    double surge_allowance; /* Pa, of KENT_TEST_EN805_ASSUMED */
-    double static_level;    /* m; NAN: the highest connected level of any state */
-    double future_pressure; /* Pa; NAN: none */
-    int future_gauge;       /* point where it is read; -1 */
-    double factor[8];       /* by kent_case_kind; NAN: the rules' safety factor */
+    double test_pressure;       /* Pa, of KENT_TEST_FIXED; NAN: no test case */
+    int test_gauge;             /* point where it is read; -1 */
+    double test_factor;         /* of KENT_TEST_FACTOR */
+    double surge_allowance;     /* Pa, of KENT_TEST_EN805_ASSUMED */
+    double static_level;        /* m; NAN: the highest connected level of any state */
+    double future_pressure;     /* Pa; NAN: none */
+    int future_gauge;           /* point where it is read; -1 */
+    double factor[8];           /* by kent_case_kind; NAN: the rules' safety factor */
+    double bearing_increase[8]; /* by kent_case_kind: >= 1, on what soil may bear in
+                                   cases of that kind; only as the case states; else 1
+                                 */
+    kent_thrust_area thrust_area;
+    double cooling; /* K that a fused or welded main may cool below its temperature when
+                       it was closed; NAN */
     kent_place place;
 } kent_loads;
 
@@ -473,6 +516,31 @@ typedef enum kent_case_kind {
     KENT_CASE_EXCEPTIONAL,
     KENT_CASE_SUCTION
 } kent_case_kind;
+
+/* Whether a set of rules lets blocks be built. */
+typedef enum kent_block_policy {
+    KENT_BLOCKS_ALLOWED,
+    KENT_BLOCKS_FORBIDDEN,
+    KENT_BLOCKS_ON_OLD_MAINS, /* only where a new main joins one that lay before */
+    KENT_BLOCKS_WITH_JOINTS   /* only together with restrained joints, each for all */
+} kent_block_policy;
+
+/* How a block's thickness is found. */
+typedef enum kent_spread {
+    KENT_SPREAD_45,      /* the thrust spreads within 45 degrees */
+    KENT_SPREAD_CONCRETE /* or wider, where plain concrete bends and shears so far */
+} kent_spread;
+
+typedef enum kent_concrete_code {
+    KENT_EN_1992, /* EN 1992-1-1:2004, section 12 and 6.7 */
+    KENT_ACI_318  /* ACI 318-19, chapters 14 and 22.8 */
+} kent_concrete_code;
+
+/* Which published form gives restrained lengths; both are worked out. */
+typedef enum kent_length_form {
+    KENT_FORM_HANDBOOK, /* iron-pipe handbooks */
+    KENT_FORM_ETL       /* USACE ETL 1110-3-446 */
+} kent_length_form;
 
 /* Design rules: one named set of config/rules.cfg, each value overridable by the case.
  */
@@ -493,6 +561,29 @@ typedef struct kent_rules {
     double water_unit_weight;    /* N/m3, of ground water */
     double wrapped_ratio;  /* friction of a sleeved pipe over that of a bare one */
     double largest_volume; /* m3 of one block beyond which it is refused */
+
+    /* of all that follow 0 is: not asked, not limited, not counted */
+    kent_block_policy blocks;          /* whether blocks may be built at all */
+    kent_block_policy vertical_blocks; /* and under an upward thrust */
+    double largest_thrust; /* N, factored, beyond which the concrete must be designed */
+    double height_over_diameter; /* m: a block is taller than the pipe by so much */
+    double concrete_behind;      /* m: least between fitting and face */
+    double large_diameter, large_least_cover; /* m: from that outside diameter on, the
+                                                 least cover is this */
+    double steepest_ground; /* rad: no block where the ground before it falls more */
+    double steepest_pipe;   /* rise over run: a main steeper than this wants anchors */
+    bool soil_above; /* the prism of soil above a gravity block counts as weight */
+    kent_spread spread;
+    kent_concrete_code concrete_code;
+    double strength_before_test; /* Pa, that concrete must have before the test */
+    double least_age;            /* s, from casting to the test */
+    double factor_sliding, factor_overturning, factor_flotation; /* asked of blocks */
+    double factor_stability_test; /* in place of the first two under test */
+    double strap_stress;          /* Pa, that straps and rods may be pulled to */
+    double strap_bond;            /* Pa, between rod and concrete */
+    double strap_diameter;        /* m, least */
+    kent_length_form length_form; /* that restrained lengths are taken from */
+    double run_share; /* of the bearing of a tee's restrained run, that counts */
 } kent_rules;
 
 typedef enum kent_surge_friction {
@@ -539,7 +630,11 @@ typedef enum kent_role {
     KENT_ROLE_TAPPING, /* a sleeve on a main that was there before */
     KENT_ROLE_HYDRANT,
     KENT_ROLE_AIR_VALVE,
-    KENT_ROLE_WASHOUT
+    KENT_ROLE_WASHOUT,
+    KENT_ROLE_MANHOLE,
+    KENT_ROLE_WALL,          /* a structure that the main passes or ends in, and that
+                                holds it */
+    KENT_ROLE_FLANGE_ADAPTOR /* a joint that no ground pulls through: it slips */
 } kent_role;
 
 /* How a branch without a pipe ends. */
@@ -568,6 +663,7 @@ typedef enum kent_restraint_choice {
     KENT_THRUST_BLOCK, /* bearing, gravity or base, as the thrust asks */
     KENT_ANCHOR_BLOCK, /* a bearing block that holds from either side */
     KENT_RESTRAINED_JOINTS,
+    KENT_BLOCK_AND_JOINTS, /* a stated share each */
     KENT_NO_RESTRAINT
 } kent_restraint_choice;
 
@@ -598,6 +694,33 @@ typedef struct kent_port {
     double pressure, flow; /* Pa gauge; m3/s out of the fitting */
 } kent_port;
 
+/* What a block's face stands against. */
+typedef enum kent_backing {
+    KENT_BACKING_NATURAL, /* undisturbed ground */
+    KENT_BACKING_FILL     /* fill compacted under control between face and ground */
+} kent_backing;
+
+/* How the ground falls away from a fitting. */
+typedef struct kent_slope {
+    kent_vec3 direction; /* level, unit, downhill */
+    double angle;        /* rad below the level; NAN: level ground */
+} kent_slope;
+
+/* What the engineer adds to one fitting's geometry for its restraint. */
+typedef struct kent_stated {
+    kent_slope slope;
+    kent_backing backing;
+    double block_share;   /* of the thrust that the block takes, KENT_BLOCK_AND_JOINTS;
+                             NAN */
+    double run_length[2]; /* m of a tee's run restrained, by port 0 and 1; NAN: none
+                             credited */
+    double contact_area;  /* m2 on which the fitting presses on its block; NAN */
+    size_t closes_first, closes_count; /* into kent_model.closes: the next points of
+                                          legs that can be shut; */
+    bool closes_stated;                /* else all legs of a cross or wye can */
+    char reason[160]; /* for its restraint being as it is; may be empty */
+} kent_stated;
+
 /* What a case says of a fitting (list `fittings`). */
 typedef struct kent_fitting_note {
     char id[KENT_ID]; /* of a ports-only fitting, else its point's */
@@ -619,9 +742,44 @@ typedef struct kent_fitting_note {
     double rating; /* Pa, of its parts, as flanges are; NAN */
     double surge_rating, test_rating; /* Pa, the same with surge, under test; NAN */
     char standard[96];                /* that these are by; may be empty */
+    kent_stated stated;
     size_t port_first, port_count; /* into kent_model.given_ports; 0: from geometry */
     kent_place place;
 } kent_fitting_note;
+
+/* Dimensions as built, for the factor they reach (list `as_built`). NAN: not given. */
+typedef struct kent_built {
+    char fitting[KENT_ID];
+    double width, height, thickness; /* m, of the face, or of a base or gravity block:
+                                        along, across or high, as in kent_block */
+    double face_width, face_height, face_thickness; /* m, of a face beside those */
+    double axis_above;           /* m, pipe axis over the centre of the face; 0 */
+    int body;                    /* kent_block_type; -1: no block */
+    size_t leg_first, leg_count; /* into kent_model.built_legs */
+    kent_place place;
+} kent_built;
+
+typedef struct kent_built_leg {
+    int toward;    /* the next point along that leg */
+    double length; /* m restrained */
+} kent_built_leg;
+
+/* How concrete gains strength. */
+typedef enum kent_cement {
+    KENT_CEMENT_NORMAL,
+    KENT_CEMENT_RAPID,
+    KENT_CEMENT_SLOW
+} kent_cement;
+
+/* Concrete of the blocks: a row of config/concretes.cfg, or as the case says. */
+typedef struct kent_concrete {
+    char id[KENT_ID];
+    char source[200];
+    double strength; /* Pa, characteristic or specified, of a cylinder at 28 days; NAN:
+                        not stated */
+    kent_cement cement;
+    kent_place place;
+} kent_concrete;
 
 /* ---- derived --------------------------------------------------------------------- */
 
@@ -682,12 +840,14 @@ typedef struct kent_fitting {
     bool parted; /* a group of which some member is not joined to the others by pipe
                     between them alone, and may be under pressure without them */
     size_t obstacle_first, obstacle_count; /* into kent_model.obstacles */
-    int zone;   /* of kent_model.ground_zones, that it lies in; -1 */
-    int trench; /* -1: not stated */
+    int zone;     /* of kent_model.ground_zones, that it lies in; -1 */
+    int trench;   /* -1: not stated */
+    int backfill; /* soil; -1: as the ground */
     kent_restraint_choice restraint;
     int soil;                  /* -1: not stated */
     double cover, water_table; /* m; NAN: not stated */
     double outside_diameter;   /* m, of its largest port */
+    kent_stated stated;        /* slope's angle NAN where nothing is said */
     double weight;             /* N */
     int valve;                 /* KENT_VALVE: which of valves; -1 */
     int device; /* KENT_VALVE: which of devices, where it is one of those; -1 */
@@ -706,6 +866,7 @@ typedef struct kent_march {
 /* Who draws and checks, printed on sheets and never computed with. Empty: not given. */
 typedef struct kent_project {
     char number[64], drawing[64], revision[64], designer[64], checker[64];
+    char utility[64], date[32];
 } kent_project;
 
 typedef struct kent_model {
@@ -788,6 +949,15 @@ typedef struct kent_model {
     size_t obstacle_count;
     int *together; /* [together_count] points */
     size_t together_count;
+    int *closes; /* [closes_count] points */
+    size_t closes_count;
+    kent_built *built;
+    size_t built_count;
+    kent_built_leg *built_legs;
+    size_t built_leg_count;
+    kent_waiver *waivers;
+    size_t waiver_count;
+    kent_concrete concrete;
     kent_notes assumed; /* "what\tvalue\twhy": what nobody gave */
     kent_notes cautions;
 
@@ -829,6 +999,8 @@ kent_pipe kent_pipe_blank(void);
 kent_soil kent_soil_blank(void);
 kent_fitting_note kent_note_blank(void);
 kent_port kent_port_blank(void);
+kent_stated kent_stated_blank(void);
+kent_built kent_built_blank(void);
 
 kent_model *kent_model_new(void); /* empty, with every default set; NULL: no memory */
 void kent_model_free(kent_model *m);
@@ -924,9 +1096,11 @@ double kent_span_loss(const kent_model *m, const kent_span *span, double flow,
 
 /* The ground around a pipe at one place along it. */
 typedef struct kent_ground_here {
-    int soil;                  /* -1: not stated */
-    int trench;                /* -1: not stated */
-    int zone;                  /* of kent_model.ground_zones; -1: in none */
+    int soil;     /* -1: not stated */
+    int trench;   /* -1: not stated */
+    int zone;     /* of kent_model.ground_zones; -1: in none */
+    int backfill; /* soil; -1: as the ground */
+    bool casing;
     double cover, water_table; /* m; NAN: not stated; INFINITY: no water */
 } kent_ground_here;
 
@@ -981,6 +1155,7 @@ const char *kent_joint_word(kent_joint joint);
 const char *kent_class_word(kent_class class_of);
 const char *kent_device_word(kent_device_kind kind); /* "air vessel" ... */
 const char *kent_restraint_word(kent_restraint_choice restraint);
+const char *kent_nature_word(kent_nature nature); /* "natural", "fill" ... */
 const char *kent_friction_word(kent_friction_law law);
 const char *kent_axial_support_word(kent_axial_support support);
 

@@ -18,7 +18,10 @@
     X(KENT_ROLE_TAPPING, "tapping-tee")                                                \
     X(KENT_ROLE_HYDRANT, "hydrant")                                                    \
     X(KENT_ROLE_AIR_VALVE, "air-valve-tee")                                            \
-    X(KENT_ROLE_WASHOUT, "washout-tee")
+    X(KENT_ROLE_WASHOUT, "washout-tee")                                                \
+    X(KENT_ROLE_MANHOLE, "manhole-tee")                                                \
+    X(KENT_ROLE_WALL, "wall-piece")                                                    \
+    X(KENT_ROLE_FLANGE_ADAPTOR, "flange-adaptor")
 
 #define BRANCH_ENDS(X)                                                                 \
     X(KENT_BRANCH_NONE, "none")                                                        \
@@ -49,7 +52,16 @@
     X(KENT_THRUST_BLOCK, "thrust-block")                                               \
     X(KENT_ANCHOR_BLOCK, "anchor-block")                                               \
     X(KENT_RESTRAINED_JOINTS, "restrained-joints")                                     \
+    X(KENT_BLOCK_AND_JOINTS, "block-and-joints")                                       \
     X(KENT_NO_RESTRAINT, "none")
+
+#define NATURES(X)                                                                     \
+    X(KENT_NATURAL, "natural")                                                         \
+    X(KENT_FILL, "fill")                                                               \
+    X(KENT_ORGANIC, "organic")                                                         \
+    X(KENT_EXPANSIVE, "expansive")                                                     \
+    X(KENT_LIQUEFIABLE, "liquefiable")                                                 \
+    X(KENT_COLLAPSIBLE, "collapsible")
 
 #define FRICTION_LAWS(X)                                                               \
     X(KENT_FRICTIONLESS, "frictionless")                                               \
@@ -95,6 +107,7 @@ WORD_FUNCTION(kent_joint_word, kent_joint, joint, JOINTS)
 WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
 WORD_FUNCTION(kent_device_word, kent_device_kind, kind, DEVICES)
 WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
+WORD_FUNCTION(kent_nature_word, kent_nature, nature, NATURES)
 WORD_FUNCTION(kent_friction_word, kent_friction_law, law, FRICTION_LAWS)
 WORD_FUNCTION(kent_axial_support_word, kent_axial_support, support, AXIAL_SUPPORTS)
 

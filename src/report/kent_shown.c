@@ -249,6 +249,12 @@ static const char *role_or_type(const kent_fitting *fitting)
         return "air valve tee";
     case KENT_ROLE_WASHOUT:
         return end ? "washout end" : "washout tee";
+    case KENT_ROLE_MANHOLE:
+        return end ? "manhole end" : "manhole tee";
+    case KENT_ROLE_WALL:
+        return "wall piece";
+    case KENT_ROLE_FLANGE_ADAPTOR:
+        return "flange adaptor";
     }
     return end ? "dead end" : kent_fitting_type_word(fitting->type);
 }

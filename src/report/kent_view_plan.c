@@ -321,6 +321,7 @@ static const char *why_restraint(const kent_fitting *f)
         return "since it is pushed along the pipe";
     case KENT_RESTRAINED_JOINTS:
         return "since its joints cannot slip";
+    case KENT_BLOCK_AND_JOINTS: /* never by itself */
     case KENT_NO_RESTRAINT:
         return "as its type asks for";
     }

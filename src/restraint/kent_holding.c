@@ -193,6 +193,7 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
     switch (h->chosen) {
     case KENT_THRUST_BLOCK:
     case KENT_ANCHOR_BLOCK:
+    case KENT_BLOCK_AND_JOINTS:
         holding_block(w, h);
         break;
     case KENT_RESTRAINED_JOINTS:

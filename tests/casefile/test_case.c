@@ -200,11 +200,12 @@ static void words_become_what_they_say(void **state)
     static const char *const FRICTIONS[] = {[KENT_SURGE_NONE] = "none",
                                             [KENT_SURGE_CONSTANT] = "constant",
                                             [KENT_SURGE_QUASI_STEADY] = "quasi-steady"};
-    static const char *const RESTRAINTS[] = {[KENT_THRUST_BLOCK] = "thrust-block",
-                                             [KENT_ANCHOR_BLOCK] = "anchor-block",
-                                             [KENT_RESTRAINED_JOINTS] =
-                                                 "restrained-joints",
-                                             [KENT_NO_RESTRAINT] = "none"};
+    static const char *const RESTRAINTS[] = {
+        [KENT_THRUST_BLOCK] = "thrust-block",
+        [KENT_ANCHOR_BLOCK] = "anchor-block",
+        [KENT_RESTRAINED_JOINTS] = "restrained-joints",
+        [KENT_BLOCK_AND_JOINTS] = "block-and-joints",
+        [KENT_NO_RESTRAINT] = "none"};
     kent_catalogue *c = read_catalogue();
 
     for (int i = 0; i < 6; i++) {

@@ -98,11 +98,11 @@ static void words_stand_in_the_order_of_the_models_enumerations(void **state)
     WORDS_AGREE("pipe", "axial_support", 3, kent_axial_support_word,
                 kent_axial_support);
     WORDS_AGREE("scenario", "class", 3, kent_class_word, kent_class);
-    WORDS_AGREE("fitting", "type", 12, note_type_word, int);
+    WORDS_AGREE("fitting", "type", 15, note_type_word, int);
     WORDS_AGREE("branch", "joint", 6, kent_joint_word, kent_joint);
     WORDS_AGREE("ground", "trench", KENT_TRENCHES, kent_trench_word, int);
     WORDS_AGREE("fitting", "orientation", 3, kent_orientation_word, kent_orientation);
-    WORDS_AGREE("fitting", "restraint", 4, kent_restraint_word, kent_restraint_choice);
+    WORDS_AGREE("fitting", "restraint", 5, kent_restraint_word, kent_restraint_choice);
 }
 
 static void ranges_are_told_in_units_of_display(void **state)

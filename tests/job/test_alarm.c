@@ -410,7 +410,8 @@ static void a_zone_whose_stations_are_counted_twice_is_seen(void **state)
                                .soil = -1,
                                .cover = 2.0,
                                .water_table = (double)NAN,
-                               .trench = -1};
+                               .trench = -1,
+                               .backfill = -1};
         kent_build_derive(&b);
         if (ROWS[i].twice) {
             assert_raised(&b, "counted before \"P\" and again after it");

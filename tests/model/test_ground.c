@@ -39,6 +39,7 @@ static kent_ground_zone *zoned(kent_build *b, int pipe, double from, double to)
                                .cover = (double)NAN,
                                .water_table = (double)NAN,
                                .trench = -1,
+                               .backfill = -1,
                                .place = {0, 900 + (int)m->ground_zone_count++}};
     return zone;
 }

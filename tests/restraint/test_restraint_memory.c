@@ -80,7 +80,8 @@ static void nothing_leaks_of_what_is_said_of_ground_and_obstacles(void **state)
                                                   .soil = 1,
                                                   .cover = (double)NAN,
                                                   .water_table = (double)NAN,
-                                                  .trench = -1};
+                                                  .trench = -1,
+                                                  .backfill = -1};
     b.model->ground_zone_count = 1;
     b.model->obstacles[0] = (kent_obstacle){
         .what = "sewer", .distance = 3.0, .depth = 2.0, .direction = {1.0, 0.0, 0.0}};

@@ -61,7 +61,8 @@ static kent_ground_zone *zoned(kent_build *b, double from, double to, int soil)
                                .soil = soil,
                                .cover = (double)NAN,
                                .water_table = (double)NAN,
-                               .trench = -1};
+                               .trench = -1,
+                               .backfill = -1};
     return zone;
 }
 
