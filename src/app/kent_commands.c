@@ -196,7 +196,9 @@ static kent_report_options report_options(const session *s)
 {
     const kent_options *o = s->options; /* units: SI unless given, of a catalogue */
     return (kent_report_options){.units = s->model ? s->model->units : o->units,
-                                 .wide = o->wide};
+                                 .wide = o->wide,
+                                 .sort = o->sort,
+                                 .only = o->only};
 }
 
 static kent_exit do_job(session *s)

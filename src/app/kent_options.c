@@ -24,8 +24,10 @@ enum {
     GAVE_STRICT = 1 << 7,
     GAVE_NO_FILES = 1 << 8,
     GAVE_SENSITIVITY = 1 << 9,
-    GAVE_ALL = (1 << 10) - 1, /* of run */
-    GAVE_KEYS = 1 << 10
+    GAVE_SORT = 1 << 10,
+    GAVE_ONLY = 1 << 11,
+    GAVE_ALL = (1 << 12) - 1, /* of run */
+    GAVE_KEYS = 1 << 12
 };
 
 typedef struct command_row {
@@ -93,7 +95,9 @@ enum {
     KEY_UNITS,
     KEY_FORMAT,
     KEY_KEYS,
-    KEY_SENSITIVITY
+    KEY_SENSITIVITY,
+    KEY_SORT,
+    KEY_ONLY
 };
 
 static const struct argp_option OPTIONS[] = {
@@ -110,6 +114,10 @@ static const struct argp_option OPTIONS[] = {
     {"sensitivity", KEY_SENSITIVITY, NULL, 0,
      "How peaks and blocks move with wave speed, inertia, check and air valves, times",
      0},
+    {"sort", KEY_SORT, "station|use|thrust|concrete", 0,
+     "Order of the fittings listed; default: what cannot be held, then along the main",
+     0},
+    {"only", KEY_ONLY, "not-held|blocks|joints", 0, "List these fittings alone", 0},
     {"keys", KEY_KEYS, NULL, 0, "Print every key that a case may hold, without a CASE",
      0},
     {"version", 'V', NULL, 0, "Print the version", -1},
@@ -224,6 +232,8 @@ static void check_options(struct argp_state *state, const command_row *c, unsign
                  {GAVE_STRICT, "--strict"},
                  {GAVE_NO_FILES, "--no-files"},
                  {GAVE_SENSITIVITY, "--sensitivity"},
+                 {GAVE_SORT, "--sort"},
+                 {GAVE_ONLY, "--only"},
                  {GAVE_KEYS, "--keys"}};
     for (size_t i = 0; i < sizeof NAMES / sizeof NAMES[0]; i++) {
         if ((gave & NAMES[i].bit) && !(c->options & NAMES[i].bit)) {
@@ -298,6 +308,8 @@ static error_t read_key(int key, char *text, struct argp_state *state)
 {
     static const char *const SYSTEMS[] = {"SI", "US"};
     static const char *const FORMATS[] = {"table", "csv", "json"};
+    static const char *const SORTS[] = {"station", "use", "thrust", "concrete"};
+    static const char *const ONLIES[] = {"not-held", "blocks", "joints"};
     reading *r = state->input;
     kent_options *o = r->options;
     if (read_switch(key, r)) return 0;
@@ -323,6 +335,15 @@ static error_t read_key(int key, char *text, struct argp_state *state)
     case KEY_FORMAT:
         o->format = (kent_format)choose(state, "a format", text, FORMATS, 3);
         r->gave |= GAVE_FORMAT;
+        return 0;
+    case KEY_SORT:
+        o->sort = (kent_sort)(1 + choose(state, "an order", text, SORTS, 4));
+        r->gave |= GAVE_SORT;
+        return 0;
+    case KEY_ONLY:
+        o->only =
+            (kent_only)(1 + choose(state, "a choice of fittings", text, ONLIES, 3));
+        r->gave |= GAVE_ONLY;
         return 0;
     case 'V':
         (void)printf("kentledge %s\n", KENT_VERSION);

@@ -2,7 +2,7 @@
 #ifndef KENT_OPTIONS_H
 #define KENT_OPTIONS_H
 
-#include "kent_units.h"
+#include "kent_report.h"
 
 #include <stdbool.h>
 #include <stddef.h>
@@ -46,6 +46,8 @@ typedef struct kent_options {
     unsigned threads; /* 0: as many as there are processors */
     kent_format format;
     bool wide, quiet, strict, no_files, sensitivity;
+    kent_sort sort;
+    kent_only only;
     bool keys; /* check: the key table, no case */
 } kent_options;
 

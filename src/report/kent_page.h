@@ -3,7 +3,7 @@
 #ifndef KENT_PAGE_H
 #define KENT_PAGE_H
 
-#include "kent_report.h"
+#include "kent_listing.h"
 #include "kent_table.h"
 
 /* What the parts of one printed report share. */
@@ -13,8 +13,7 @@ typedef struct kent_page {
     kent_system units;
     bool wide;
     size_t limit; /* columns of a line; 0: none */
-    size_t
-        *order; /* [fitting_count] what cannot be held first, then along the routes */
+    kent_listing listing;
     char (*letter)[4]; /* [fitting_count] of its note; "" none */
     bool cut;          /* a name was cut short */
     kent_text *out;

@@ -17,9 +17,30 @@ typedef struct kent_sink {
 /* A sink on an open stream. */
 kent_sink kent_sink_stream(FILE *stream);
 
+/* In which order fittings are listed. */
+typedef enum kent_sort {
+    KENT_SORT_USUAL,    /* along the routes; in tables what cannot be held first */
+    KENT_SORT_STATION,  /* as counted along each route, whichever route it is */
+    KENT_SORT_USE,      /* what cannot be held, then the most used of what resists */
+    KENT_SORT_THRUST,   /* the largest factored thrust first */
+    KENT_SORT_CONCRETE, /* the largest block first */
+    KENT_SORTS
+} kent_sort;
+
+/* Which fittings are listed. */
+typedef enum kent_only {
+    KENT_ONLY_ALL,
+    KENT_ONLY_NOT_HELD, /* that nothing here can hold */
+    KENT_ONLY_BLOCKS,
+    KENT_ONLY_JOINTS,
+    KENT_ONLIES
+} kent_only;
+
 typedef struct kent_report_options {
     kent_system units;
     bool wide;
+    kent_sort sort;
+    kent_only only; /* figures in all stay those of every fitting */
 } kent_report_options;
 
 /* The two tables on standard output, at most 100 columns wide unless wide. */

@@ -27,29 +27,26 @@ static void letter_of(size_t index, char out[4])
     out[length] = '\0';
 }
 
-static kent_status page_open(kent_page *page)
+static kent_status page_open(kent_page *page, const kent_report_options *o)
 {
-    const size_t count = page->model->fitting_count;
-    page->order = kent_alloc(count, sizeof *page->order);
-    page->letter = kent_alloc(count, sizeof *page->letter);
-    if (!page->order || !page->letter) return KENT_E_NOMEM;
-    size_t placed = 0;
-    for (int held = 0; held < 2; held++) {
-        for (size_t i = 0; i < count; i++) {
-            const kent_holding *h = &page->results->restraints->fittings[i];
-            if (kent_shown_not_held(h) == (held == 1)) continue;
-            if (held == 0 && h->cautions.count > 0) {
-                letter_of(placed, page->letter[i]);
-            }
-            page->order[placed++] = i;
-        }
+    const kent_restraints *all = page->results->restraints;
+    page->letter = kent_alloc(page->model->fitting_count, sizeof *page->letter);
+    if (!page->letter) return KENT_E_NOMEM;
+    const kent_status status =
+        kent_listing_make(page->results, o, true, &page->listing);
+    size_t lettered = 0;
+    for (size_t k = 0; k < page->listing.count; k++) {
+        const size_t i = page->listing.fitting[k];
+        const kent_holding *h = &all->fittings[i];
+        if (!kent_shown_not_held(h) || h->cautions.count == 0) continue;
+        letter_of(lettered++, page->letter[i]);
     }
-    return KENT_OK;
+    return status;
 }
 
 static void page_close(kent_page *page)
 {
-    free(page->order);
+    kent_listing_clear(&page->listing);
     free(page->letter);
 }
 
@@ -192,8 +189,8 @@ static bool try_fittings(kent_page *page, kent_room room)
         [LOAD] = {"load", "/res", KENT_ALIGN_RIGHT, false},
     };
     kent_table t = {.columns = columns, .column_count = FITTING_COLUMNS};
-    for (size_t i = 0; i < page->model->fitting_count; i++) {
-        fitting_rows(page, page->order[i], room, &t);
+    for (size_t i = 0; i < page->listing.count; i++) {
+        fitting_rows(page, page->listing.fitting[i], room, &t);
     }
     const size_t gaps = FITTING_COLUMNS - 1; /* columns can stand closer by one each */
     const size_t least = kent_table_width(&t) - (roomy ? 0 : gaps);
@@ -222,8 +219,8 @@ static void join_notes(const kent_notes *notes, kent_text *words)
 /* Why each fitting that is not held is not, and what would help. */
 static void print_refusals(kent_page *page)
 {
-    for (size_t i = 0; i < page->model->fitting_count; i++) {
-        const size_t f = page->order[i];
+    for (size_t i = 0; i < page->listing.count; i++) {
+        const size_t f = page->listing.fitting[i];
         kent_text lead = {0}, words = {0};
         if (page->letter[f][0] == '\0') continue;
         kent_text_add(&lead, "%s  ", page->letter[f]);
@@ -251,8 +248,8 @@ static void print_caution(kent_page *page, const char *caution)
     enum { NAMED = 8 };
     size_t named = 0;
     kent_text words = {0};
-    for (size_t i = 0; i < page->model->fitting_count; i++) {
-        const size_t f = page->order[i];
+    for (size_t i = 0; i < page->listing.count; i++) {
+        const size_t f = page->listing.fitting[i];
         if (page->letter[f][0] != '\0') continue;
         if (!has_note(&page->results->restraints->fittings[f].cautions, caution)) {
             continue;
@@ -273,8 +270,8 @@ static void print_caution(kent_page *page, const char *caution)
 static void print_cautions(kent_page *page)
 {
     kent_notes distinct = {0};
-    for (size_t i = 0; i < page->model->fitting_count; i++) {
-        const size_t f = page->order[i];
+    for (size_t i = 0; i < page->listing.count; i++) {
+        const size_t f = page->listing.fitting[i];
         const kent_notes *notes = &page->results->restraints->fittings[f].cautions;
         for (size_t k = 0; page->letter[f][0] == '\0' && k < notes->count; k++) {
             kent_notes_add(&distinct, "%s", notes->text[k]);
@@ -306,11 +303,20 @@ static void add_factors(const kent_page *page, kent_text *words)
     kent_text_add(words, ". ");
 }
 
+/* How many rows there are, where they are not all. */
+static void add_listed(const kent_page *page, kent_text *words)
+{
+    const size_t all = page->model->fitting_count;
+    if (page->listing.count == all) return;
+    kent_text_add(words, "Listed: %zu of %zu fittings. ", page->listing.count, all);
+}
+
 static void print_totals(kent_page *page)
 {
     const kent_restraints *all = page->results->restraints;
     const size_t assumed = page->model->assumed.count;
     kent_text words = {0};
+    add_listed(page, &words);
     add_factors(page, &words);
     const kent_shown volume =
         kent_shown_number(kent_units_shown(KENT_VOLUME, page->units, all->concrete), 1);
@@ -406,8 +412,8 @@ static void print_pressures(kent_page *page)
         if (!has_ratings(page, (kent_rating)k)) continue;
         columns[t.column_count++].head = RATED[k];
     }
-    for (size_t i = 0; i < page->model->fitting_count; i++) {
-        const size_t f = page->order[i];
+    for (size_t i = 0; i < page->listing.count; i++) {
+        const size_t f = page->listing.fitting[i];
         if (page->model->fittings[f].point >= 0) pressure_row(page, f, &t);
     }
     if (t.cell_count > 0) {
@@ -522,7 +528,7 @@ static void print_rest(kent_page *page)
 {
     const kent_report_options o = {.units = page->units, .wide = true};
     kent_text_add(page->out, "\n");
-    kent_summary_table(page->results, &o, page->order, page->out);
+    kent_summary_table(page->results, &o, &page->listing, page->out);
 }
 
 static void print_end(kent_page *page)
@@ -555,7 +561,7 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
                       .wide = o->wide,
                       .limit = o->wide ? 0 : KENT_TABLE_LIMIT,
                       .out = &out};
-    kent_status status = page_open(&page);
+    kent_status status = page_open(&page, o);
     if (status) goto done;
     print_title(&page);
     print_fittings(&page);

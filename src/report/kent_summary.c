@@ -430,14 +430,15 @@ kent_status kent_report_summary_csv(const kent_results *r, const kent_report_opt
                                     kent_sink sink)
 {
     kent_text out = {0}, words = {0};
-    kent_status status = KENT_OK;
+    kent_listing listing;
+    kent_status status = kent_listing_make(r, o, false, &listing);
     for (size_t c = 0; c < COLUMN_COUNT; c++) {
         if (c > 0) kent_text_add(&out, ",");
         add_heading(&COLUMNS[c], o->units, &out);
     }
     kent_text_add(&out, "\n");
-    for (size_t i = 0; !status && i < r->model->fitting_count; i++) {
-        const kent_row row = row_of(r, o->units, i);
+    for (size_t i = 0; !status && i < listing.count; i++) {
+        const kent_row row = row_of(r, o->units, listing.fitting[i]);
         for (size_t c = 0; c < COLUMN_COUNT; c++) {
             if (c > 0) kent_text_add(&out, ",");
             add_field(&row, &COLUMNS[c], &words, &out);
@@ -446,6 +447,7 @@ kent_status kent_report_summary_csv(const kent_results *r, const kent_report_opt
         status = words.failed ? KENT_E_NOMEM : kent_sink_flush(sink, &out);
     }
     if (!status) status = kent_sink_flush(sink, &out);
+    kent_listing_clear(&listing);
     kent_text_clear(&words);
     kent_text_clear(&out);
     return status;
@@ -468,7 +470,7 @@ static void add_cell(const kent_row *row, const kent_summary_column *c,
 }
 
 void kent_summary_table(const kent_results *r, const kent_report_options *o,
-                        const size_t *order, kent_text *out)
+                        const kent_listing *listing, kent_text *out)
 {
     const kent_summary_column *chosen[COLUMN_COUNT];
     kent_column columns[COLUMN_COUNT];
@@ -486,8 +488,8 @@ void kent_summary_table(const kent_results *r, const kent_report_options *o,
         chosen[count++] = &COLUMNS[c];
     }
     kent_table t = {.columns = columns, .column_count = count};
-    for (size_t i = 0; i < r->model->fitting_count; i++) {
-        const kent_row row = row_of(r, o->units, order[i]);
+    for (size_t i = 0; i < listing->count; i++) {
+        const kent_row row = row_of(r, o->units, listing->fitting[i]);
         for (size_t c = 0; c < count; c++) {
             add_cell(&row, chosen[c], &words, &t);
         }

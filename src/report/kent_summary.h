@@ -3,12 +3,11 @@
 #ifndef KENT_SUMMARY_H
 #define KENT_SUMMARY_H
 
-#include "kent_report.h"
+#include "kent_listing.h"
 
-/* The columns that the narrow table does not have, as an aligned table. order:
- * [fitting_count] the fittings in the order of the rows. */
+/* The columns that the narrow table does not have, as an aligned table. */
 void kent_summary_table(const kent_results *r, const kent_report_options *o,
-                        const size_t *order, kent_text *out);
+                        const kent_listing *listing, kent_text *out);
 
 /* What moves as one thing at a time does: r->sensitivity, which must be there. */
 void kent_sensitivity_table(const kent_results *r, const kent_report_options *o,

@@ -73,6 +73,9 @@ class App(unittest.TestCase):
                 (["run", "main.cfg", "--nonsense"], "nonsense"),
                 (["run", "main.cfg", "--out", "x", "--no-files"], "exclude"),
                 (["check", "main.cfg", "--strict"], "--strict"),
+                (["check", "main.cfg", "--sort", "use"], "--sort"),
+                (["run", "main.cfg", "--sort", "size"], "station, use, thrust, concrete"),
+                (["run", "main.cfg", "--only", "bends"], "not-held, blocks, joints"),
                 (["explain", "main.cfg", "--sensitivity"], "--sensitivity"),
                 (["catalogue", "pips"], "pipes"),
                 (["draw", "main.cfg", "plan"], "not in this version")]:
@@ -292,6 +295,34 @@ class App(unittest.TestCase):
         self.assertEqual(comma.stdout, "1,5")  # else nothing is tested
         other = self.call("run", "main.cfg", "--format=csv", "--no-files", env=env)
         self.assertEqual(plain.stdout, other.stdout)
+
+    def listed(self, *args):
+        r = self.call("run", "main.cfg", "--format", "csv", *args)
+        self.assertEqual((r.returncode, r.stderr.count("error")), (0, 0))
+        return [(row["point"], row) for row in csv.DictReader(r.stdout.splitlines())]
+
+    def test_fittings_are_sorted_and_chosen_and_the_folder_has_all_as_ever(self):
+        ends = CASE.replace('cover = "1.6 m"; };', 'cover = "1.6 m"; };\n'
+                            'fittings = ( { at = "PI1"; soil = "peat-PT"; } );')
+        (self.dir / "main.cfg").write_text(ends)
+        usual = [p for p, _ in self.listed()]
+        self.assertEqual(usual, ["PI1", "E"])
+        by_thrust = self.listed("--sort", "thrust")
+        design = [float(next(v for k, v in row.items() if k.startswith("factored thrust")))
+                  for _, row in by_thrust]
+        self.assertEqual(design, sorted(design, reverse=True))
+        self.assertEqual([p for p, _ in self.listed("--sort", "use")], ["PI1", "E"])
+        self.assertEqual([p for p, _ in self.listed("--sort", "concrete")], ["E", "PI1"])
+        self.assertEqual([p for p, _ in self.listed("--only", "not-held")], ["PI1"])
+        self.assertEqual([p for p, _ in self.listed("--only", "blocks")], ["E"])
+        self.assertEqual(self.listed("--only", "joints"), [])
+        file = (self.dir / "main-results" / "summary.csv").read_text(encoding="utf-8")
+        self.assertEqual([row["point"] for row in csv.DictReader(file.splitlines())], usual)
+        table = self.call("run", "main.cfg", "--only", "not-held", "--no-files").stdout
+        self.assertIn("Listed: 1 of 2 fittings.", table)
+        self.assertIn("PI1", table)
+        self.assertNotIn("\n0+583", table)
+        self.assertNotIn("Listed:", self.call("run", "main.cfg", "--no-files").stdout)
 
     def test_strict_is_status_3_and_the_results_are_there(self):
         self.assertEqual(self.call("run", "main.cfg", "--strict").returncode, 0)
