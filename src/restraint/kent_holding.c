@@ -68,6 +68,7 @@ static void holding_govern(const kent_holding_work *w, kent_holding *h,
     h->factor_asked = w->loads->cases[h->governing].safety_factor;
     h->runner_up = case_greatest(w->loads, sense, h->governing, &h->runner_up_load);
     if (h->runner_up < 0) h->runner_up_load = NAN;
+    h->runner_up_margin = h->design_thrust / h->runner_up_load - 1.0;
 }
 
 static double greatest_unfactored(const kent_fitting_loads *loads)

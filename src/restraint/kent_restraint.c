@@ -43,6 +43,7 @@ static void holding_start(kent_holding *h, const kent_fitting *f)
         .sense = KENT_RESULTANT,
         .runner_up = -1,
         .runner_up_load = NAN,
+        .runner_up_margin = NAN,
         .by_sense = {-1, -1, -1, -1},
         .chosen = f->restraint,
         .soil_beside = f->type == KENT_CURVE && f->restraint == KENT_NO_RESTRAINT,

@@ -9,6 +9,7 @@
 #include "kent_bearing.h"
 #include "kent_derivation.h"
 #include "kent_loads.h"
+#include "kent_other_way.h"
 
 /* ---- plain functions ------------------------------------------------------------- */
 
@@ -105,7 +106,8 @@ typedef struct kent_holding {
     kent_sense sense; /* sideways, upward or downward: whichever uses most; the whole
                          (KENT_RESULTANT) where restrained joints are chosen */
     int runner_up;    /* the next case; -1 */
-    double runner_up_load;     /* N, its factored load in the same sense */
+    double runner_up_load;     /* N, its factored load in the same sense and way */
+    double runner_up_margin;   /* what governs over it, less 1; NAN: no next one */
     int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
     kent_restraint_choice chosen;
     bool held;          /* false: nothing here can hold it, or nothing was asked */
@@ -113,7 +115,10 @@ typedef struct kent_holding {
     bool needs_nothing; /* within joint deflection, or no thrust */
     bool unbalanced; /* a group that no one block holds: its pushes leave a couple, or
                         one main of several pushes more alone */
-    double design_thrust; /* N, factored, of the governing case and sense */
+    double design_thrust; /* N, factored, of the governing case and sense; over its
+                             increase where soil bears it */
+    kent_other_way other_ways[KENT_OTHER_WAYS]; /* the largest load first */
+    size_t other_way_count;
     double factor_asked, factor_reached, utilisation; /* NAN where not held */
     kent_block block;
     double allowable_bearing; /* Pa, of a face at this depth; NAN: none, or not known */

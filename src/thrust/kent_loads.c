@@ -30,6 +30,7 @@ static kent_load_case *loads_add(const kent_model *m, kent_fitting_loads *loads,
         .scenario = march.scenario,
         .state = march.state,
         .safety_factor = kent_press_factor(m, kind),
+        .increase = m->loads.bearing_increase[kind],
         .above_90_percent = NAN,
         .step = NAN,
     };

@@ -28,8 +28,8 @@ typedef struct kent_instant {
 } kent_instant;
 
 typedef struct kent_load_case {
-    /* "test", "static", "steady", "future", a scenario's id, "closed from P", "branch
-     * extended", "given" */
+    /* "test", "static", "shut-off", "steady", "future", a scenario's id, "suction",
+     * "closed from P", "closed to P", "branch extended", "given" */
     char name[KENT_ID + 16];
     kent_name title;     /* as printed: its name and, among several, its state's */
     kent_case_kind kind; /* whose safety factor it takes */
@@ -38,11 +38,14 @@ typedef struct kent_load_case {
     bool given;          /* the one case of a ports-only fitting */
     bool extended;       /* a branch without a pipe, once one is joined to it */
     bool later;          /* under the pressure expected later */
-    bool closed;         /* of a shut valve, pressed from one side only: */
+    bool closed;         /* of a shut valve or leg, pressed from one side only: */
     size_t pressed;      /* which port */
+    bool emptied; /* of a shut leg, with nothing behind it, the others pressed: */
+    size_t dry;   /* which port */
     const kent_site_test *test; /* of the result: how the test pressure was found; NULL:
                                    as stated */
     double safety_factor;
+    double increase; /* >= 1, on what soil may bear in cases of this kind, as stated */
     kent_instant worst[KENT_SENSES];
     kent_instant lowest, highest; /* of a scenario: by the head; what pulls is not
                                      always the worst, but may pull the other way */
