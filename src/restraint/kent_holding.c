@@ -1,8 +1,4 @@
 #include "kent_holding_internal.h"
-#include "kent_said.h"
-#include "kent_side_internal.h"
-
-#include <limits.h>
 
 /* Loads nearer than this, relative, are a tie: the case listed first governs. */
 static const double TIE = 1e-12;
@@ -205,58 +201,6 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
 
 /* ---- restrained length ----------------------------------------------------------- */
 
-/* Says what a leg passes through without being held, what trench is guessed at, and
- * whose weak ground it goes by. */
-static void leg_note(kent_holding_work *w, const kent_leg_work *work)
-{
-    const kent_system units = w->m->units;
-
-    for (size_t i = 0; i < work->piece_count; i++) {
-        const kent_leg_piece *at = &work->piece[i];
-        if (!at->counts) {
-            kent_notes_add(&w->met,
-                           "the restrained length passes through %s of %s, which holds "
-                           "nothing",
-                           kent_said_of(KENT_LENGTH, units, at->length).s,
-                           at->soil->id);
-        } else if (work->bears && at->trench_kind >= 0 &&
-                   isnan(at->soil->passive_by_trench[at->trench_kind])) {
-            kent_notes_add(&w->met,
-                           "soil '%s' has no share of passive pressure for a trench of "
-                           "%s: its passive_ratio, %g, is taken",
-                           at->soil->id, kent_trench_word(at->trench_kind),
-                           at->trench.passive_ratio);
-        }
-        if (at->counts && at->weakest >= 0) {
-            kent_notes_add(&w->met,
-                           "the ground at %s is the weakest along the restrained "
-                           "length, which is worked out with it; ground_zones would "
-                           "bound it",
-                           w->m->points[at->weakest].id);
-        }
-    }
-}
-
-static kent_leg leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
-{
-    const double laying = work->pipe->laying_length;
-    double length = work->length;
-    int pipes = 0;
-
-    if (laying > 0.0) {
-        const double whole = ceil(length / laying - KENT_SIDE_SLACK);
-        pipes = whole < INT_MAX ? (int)whole : INT_MAX;
-        length = (double)pipes * laying;
-    }
-    return (kent_leg){
-        .port = port,
-        .length = work->length,
-        .pipes = pipes,
-        .fits = kent_leg_fits(w->m, w->standings, w->index, port, length, work->own,
-                              &w->met),
-    };
-}
-
 /* m restrained over m needed, of one leg; 1 where pipes have no known length. */
 static double leg_use(const kent_holding_work *w, const kent_leg *leg)
 {
@@ -314,8 +258,7 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
         w->lack |= lack;
         if (work.lacking) w->lacking = work.lacking;
         if (lack != 0) continue;
-        leg_note(w, &work);
-        h->legs[h->leg_count++] = leg_of(w, k, &work);
+        h->legs[h->leg_count++] = kent_leg_of(w, k, &work);
         h->restrained_length = fmax(h->restrained_length, work.length);
     }
     if (h->chosen == KENT_RESTRAINED_JOINTS) holding_joints(w, h, wanted);

@@ -54,8 +54,10 @@ kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,
  * else 0. source docs/theory/10-blocks.md, 10.31 */
 double kent_couple_alone(const kent_model *m, const kent_fitting *group,
                          const kent_fitting_loads *loads);
-void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
-void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
+void kent_holding_size(kent_holding_work *w, kent_holding *h); /* what holds */
+void kent_holding_legs(kent_holding_work *w, kent_holding *h); /* side by side */
+/* One leg of the fitting in whole pipes; what it meets goes to w's met. */
+kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work);
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */
 /* Whether nothing stands in the ground that h's face leans on; else sets obstacle. Says
  * by how much the others are clear. */

@@ -9,6 +9,7 @@
 #include "kent_bearing.h"
 #include "kent_derivation.h"
 #include "kent_loads.h"
+#include "kent_system.h"
 #include "kent_other_way.h"
 
 /* ---- plain functions ------------------------------------------------------------- */
@@ -94,11 +95,28 @@ typedef struct kent_block {
     kent_sense sense;   /* that the body is for, its face apart; of utilisation */
 } kent_block;
 
+/* What a restrained length comes to an end in. */
+typedef enum kent_leg_end {
+    KENT_LEG_IN_GROUND,    /* plain pipe */
+    KENT_LEG_AT_STRUCTURE, /* a wall piece, which holds what is left */
+    KENT_LEG_AT_FITTING,   /* one that breaks it: it does not fit */
+    KENT_LEG_AT_SOFT,      /* ground that gives no restraint: it does not fit */
+    KENT_LEG_AT_PIPE_END   /* no pipe goes on: it does not fit */
+} kent_leg_end;
+
 typedef struct kent_leg { /* restrained length of one port */
     size_t port;          /* 0 .. port_count - 1 */
-    double length;        /* m, as computed */
+    double length;        /* m, as computed by the form that sizes */
     int pipes;            /* whole pipes; 0 where no pipe length is known */
     bool fits;            /* whole pipes end before what breaks them (11) */
+    double by_form[2];    /* m, by kent_length_form; NAN: that form has none for this */
+    kent_length_form form; /* that sizes */
+    double pull;           /* N, unfactored, along the leg at the fitting */
+    double credit; /* N, that the bearing of a tee's restrained run takes off (11.20) */
+    kent_leg_end end;
+    int end_point;         /* where; -1: in plain pipe */
+    double reach;          /* m of it restrained: whole pipes, or up to what ends it */
+    double structure_pull; /* N, factored, that a structure takes at its end; else 0 */
 } kent_leg;
 
 typedef struct kent_holding {
@@ -136,6 +154,7 @@ typedef struct kent_restraints {
     size_t fitting_count;
     double concrete; /* m3 in all, faces of their own included */
     size_t not_held; /* of those that should be: not where none was asked or needed */
+    kent_systems systems; /* of fittings held by restrained joints */
 } kent_restraints;
 
 kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,
