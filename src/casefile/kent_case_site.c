@@ -160,10 +160,7 @@ void kent_fill_rules(kent_filling *f)
                        "design rule %s is the case's own, not that of \"%s\"", key,
                        rules->id);
     }
-    if (r.sound && rules->width_to_height[0] > rules->width_to_height[1]) {
-        kent_record_complain(&f->reader, &r, NULL,
-                             "width_to_height_least is above width_to_height_most");
-    }
+    kent_record_rules_check(&f->reader, &r, rules);
 }
 
 /* Whether an id ends in "-WORD". */

@@ -29,6 +29,11 @@ kent_provenance kent_record_provenance(const kent_record *record);
 void kent_record_soil(kent_reader *r, kent_record *record, kent_soil *soil);
 void kent_record_rules(const kent_record *record, kent_rules *rules);
 
+/* Complains of rules that contradict each other, in the record that has just changed
+ * them. */
+void kent_record_rules_check(kent_reader *r, kent_record *record,
+                             const kent_rules *rules);
+
 /* Whether a bearing is given in any of the four ways; 0 is one. */
 bool kent_soil_has_bearing(const kent_soil *soil);
 

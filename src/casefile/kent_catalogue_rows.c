@@ -1,4 +1,4 @@
-/* Materials, types of valve, soils and sets of rules: one row each. */
+/* Materials, types of valve and soils: one row each. */
 #include "kent_catalogue_internal.h"
 
 #include <math.h>
@@ -84,7 +84,7 @@ double kent_material_derating(const kent_material *material, double temperature)
     return d[i - 1].factor + share * (d[i].factor - d[i - 1].factor);
 }
 
-/* ---- valves, soils, rules -------------------------------------------------------- */
+/* ---- valves, soils --------------------------------------------------------------- */
 
 void kent_catalogue_add_valve(kent_reader *r, kent_record *record, kent_catalogue *c)
 {
@@ -117,16 +117,4 @@ void kent_catalogue_add_soil(kent_reader *r, kent_record *record, kent_catalogue
                              "its bearing is missing; give allowable_bearing, "
                              "bearing_by_depth, bearing_gradient or passive_share");
     }
-}
-
-void kent_catalogue_add_rules(kent_reader *r, kent_record *record, kent_catalogue *c)
-{
-    kent_rules *rules =
-        kent_catalogue_grown(r, (void **)&c->rules, &c->rule_count, sizeof *rules);
-    if (!rules) return;
-    *rules = (kent_rules){.factor_test = NAN};
-    kent_record_copy(record, "id", NULL, rules->id, sizeof rules->id);
-    kent_record_copy(record, "soils", NULL, rules->soils, sizeof rules->soils);
-    kent_record_rules(record, rules);
-    source_with_status(record, rules->source, sizeof rules->source);
 }

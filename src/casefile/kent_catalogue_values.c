@@ -1,5 +1,5 @@
-/* Values that a case and a row of the catalogue share: bearings of a soil, rules, pairs
- * of a list. */
+/* Values that a case and a row of the catalogue share: bearings of a soil, pairs of a
+ * list. */
 #include "kent_catalogue_internal.h"
 
 #include <math.h>
@@ -214,23 +214,4 @@ void kent_record_soil(kent_reader *r, kent_record *record, kent_soil *soil)
 bool kent_soil_has_bearing(const kent_soil *soil)
 {
     return soil->route != KENT_BEARING_CONSTANT || !isnan(soil->allowable_bearing);
-}
-
-/* ---- rules ----------------------------------------------------------------------- */
-
-void kent_record_rules(const kent_record *record, kent_rules *rules)
-{
-    replace(record, "safety_factor", &rules->safety_factor);
-    replace(record, "factor_test", &rules->factor_test);
-    replace(record, "height_to_depth", &rules->height_to_depth);
-    replace(record, "width_to_height_least", &rules->width_to_height[0]);
-    replace(record, "width_to_height_most", &rules->width_to_height[1]);
-    replace(record, "least_thickness", &rules->least_thickness);
-    replace(record, "least_height", &rules->least_height);
-    replace(record, "side_step", &rules->side_step);
-    replace(record, "least_cover", &rules->least_cover);
-    replace(record, "concrete_unit_weight", &rules->concrete_unit_weight);
-    replace(record, "water_unit_weight", &rules->water_unit_weight);
-    replace(record, "wrapped_ratio", &rules->wrapped_ratio);
-    replace(record, "largest_volume", &rules->largest_volume);
 }

@@ -100,7 +100,11 @@
              "pairs (trench, passive_ratio), where it depends on the trench"),         \
         SWITCH(g, "unreliable", "false", "peat, fill: no restraint may count on it")
 
-#define RULE_VALUES(g, left_out)                                                       \
+#define BLOCK_POLICIES "allowed|forbidden|old-mains-only|with-joints"
+
+/* left_out: what holds where one that every set has is left out; unasked: the same of
+ * one whose 0 means that nothing is asked. */
+#define RULE_VALUES(g, left_out, unasked)                                              \
     NUMBER(g, "safety_factor", WITHIN(1.0, 10.0), left_out,                            \
            "factor on the thrust where a case states none of its own"),                \
         NUMBER(g, "factor_test", WITHIN(1.0, 10.0), "safety_factor",                   \
@@ -126,7 +130,56 @@
         NUMBER(g, "wrapped_ratio", BETWEEN(0.0, 1.0), left_out,                        \
                "friction of a sleeved pipe over that of a bare one"),                  \
         QUANTITY(g, "largest_volume", KENT_VOLUME, BETWEEN(0.0, 1e4), left_out,        \
-                 "a block larger than this is refused")
+                 "a block larger than this is refused"),                               \
+        WORD(g, "blocks", BLOCK_POLICIES, unasked,                                     \
+             "whether blocks may be built: never, only where a new main joins an old " \
+             "one, or only together with restrained joints"),                          \
+        WORD(g, "vertical_blocks", BLOCK_POLICIES, unasked,                            \
+             "the same under an upward thrust"),                                       \
+        QUANTITY(g, "largest_thrust", KENT_FORCE, WITHIN(0.0, 1e9), unasked,           \
+                 "factored thrust beyond which the concrete itself has to be "         \
+                 "designed"),                                                          \
+        QUANTITY(g, "height_over_diameter", KENT_LENGTH, WITHIN(0.0, 10.0), unasked,   \
+                 "a block is taller than the pipe's outside diameter by so much"),     \
+        QUANTITY(g, "concrete_behind", KENT_LENGTH, WITHIN(0.0, 10.0), unasked,        \
+                 "least concrete between fitting and face"),                           \
+        QUANTITY(g, "large_diameter", KENT_DIAMETER, WITHIN(0.0, 20.0), unasked,       \
+                 "outside diameter from which large_least_cover holds"),               \
+        QUANTITY(g, "large_least_cover", KENT_LENGTH, WITHIN(0.0, 10.0), unasked,      \
+                 "least_cover from large_diameter on"),                                \
+        QUANTITY(g, "steepest_ground", KENT_ANGLE, WITHIN(0.0, 1.5707963267948966),    \
+                 unasked, "no block before ground that falls more steeply"),           \
+        NUMBER(g, "steepest_pipe", WITHIN(0.0, 10.0), unasked,                         \
+               "rise over run beyond which a main is anchored against its slope"),     \
+        SWITCH(g, "soil_above", unasked,                                               \
+               "the prism of soil above a gravity block counts as weight"),            \
+        WORD(g, "spread", "45-degrees|plain-concrete", unasked,                        \
+             "how far thrust spreads inside a block: within 45 degrees, or as far as " \
+             "plain concrete bends and shears"),                                       \
+        WORD(g, "concrete_code", "EN1992|ACI318", unasked,                             \
+             "code that plain concrete is checked by"),                                \
+        QUANTITY(g, "strength_before_test", KENT_STRENGTH, WITHIN(0.0, 1e8), unasked,  \
+                 "strength that the concrete must have before the site test"),         \
+        QUANTITY(g, "least_age", KENT_TIME, WITHIN(0.0, 1e8), unasked,                 \
+                 "time from casting to the site test"),                                \
+        NUMBER(g, "factor_sliding", WITHIN(0.0, 10.0), unasked,                        \
+               "factor asked of a block against sliding"),                             \
+        NUMBER(g, "factor_overturning", WITHIN(0.0, 10.0), unasked,                    \
+               "factor asked of a block against overturning"),                         \
+        NUMBER(g, "factor_flotation", WITHIN(0.0, 10.0), unasked,                      \
+               "factor asked of a block and its pipe against floating"),               \
+        NUMBER(g, "factor_stability_test", WITHIN(0.0, 10.0), unasked,                 \
+               "factor in place of the first two under the site test"),                \
+        QUANTITY(g, "strap_stress", KENT_STRENGTH, WITHIN(0.0, 1e9), unasked,          \
+                 "stress that straps and rods may be pulled to"),                      \
+        QUANTITY(g, "strap_bond", KENT_STRENGTH, WITHIN(0.0, 1e8), unasked,            \
+                 "bond between a rod and concrete"),                                   \
+        QUANTITY(g, "strap_diameter", KENT_DIAMETER, WITHIN(0.0, 0.1), unasked,        \
+                 "least diameter of a strap's rod"),                                   \
+        WORD(g, "length_form", "handbook|ETL-1110-3-446", unasked,                     \
+             "published form that restrained lengths are taken from"),                 \
+        NUMBER(g, "run_share", WITHIN(0.0, 1.0), unasked,                              \
+               "share of the bearing of a tee's restrained run that counts")
 
 #define PROVENANCE(g)                                                                  \
     TEXT(g, "source", 199, "required", "where the values come from"),                  \
@@ -500,7 +553,7 @@ const kent_key KENT_KEYS[] = {
     REF("design_rules", "set", "rule",
         "common-practice, or common-practice-US by units",
         "set of the catalogue of rules"),
-    RULE_VALUES("design_rules", "the set's"),
+    RULE_VALUES("design_rules", "the set's", "the set's"),
 
     ID("pump", "id", "required", "its name"),
     REF("pump", "at", "point", "required", "point where it stands"),
@@ -755,7 +808,10 @@ const kent_key KENT_KEYS[] = {
     PROVENANCE("soil_row"),
 
     ID("rule", "id", "required", "name of the set"),
-    RULE_VALUES("rule", "required"),
+    TEXT("rule", "based_on", 39, "none",
+         "set above it in the file, whose values hold where none is given"),
+    RULE_VALUES("rule", "required, or that of based_on",
+                "nothing asked, or that of based_on"),
     TEXT("rule", "soils", 15, "any",
          "last word of the ids of the soils that safety_factor is meant for"),
     PROVENANCE("rule"),

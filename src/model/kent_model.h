@@ -1156,6 +1156,10 @@ const char *kent_class_word(kent_class class_of);
 const char *kent_device_word(kent_device_kind kind); /* "air vessel" ... */
 const char *kent_restraint_word(kent_restraint_choice restraint);
 const char *kent_nature_word(kent_nature nature); /* "natural", "fill" ... */
+const char *kent_block_policy_word(kent_block_policy policy);
+const char *kent_spread_word(kent_spread spread);
+const char *kent_concrete_code_word(kent_concrete_code code);
+const char *kent_length_form_word(kent_length_form form);
 const char *kent_friction_word(kent_friction_law law);
 const char *kent_axial_support_word(kent_axial_support support);
 

@@ -63,6 +63,24 @@
     X(KENT_LIQUEFIABLE, "liquefiable")                                                 \
     X(KENT_COLLAPSIBLE, "collapsible")
 
+#define BLOCK_POLICIES(X)                                                              \
+    X(KENT_BLOCKS_ALLOWED, "allowed")                                                  \
+    X(KENT_BLOCKS_FORBIDDEN, "forbidden")                                              \
+    X(KENT_BLOCKS_ON_OLD_MAINS, "old-mains-only")                                      \
+    X(KENT_BLOCKS_WITH_JOINTS, "with-joints")
+
+#define SPREADS(X)                                                                     \
+    X(KENT_SPREAD_45, "45-degrees")                                                    \
+    X(KENT_SPREAD_CONCRETE, "plain-concrete")
+
+#define CONCRETE_CODES(X)                                                              \
+    X(KENT_EN_1992, "EN1992")                                                          \
+    X(KENT_ACI_318, "ACI318")
+
+#define LENGTH_FORMS(X)                                                                \
+    X(KENT_FORM_HANDBOOK, "handbook")                                                  \
+    X(KENT_FORM_ETL, "ETL-1110-3-446")
+
 #define FRICTION_LAWS(X)                                                               \
     X(KENT_FRICTIONLESS, "frictionless")                                               \
     X(KENT_COLEBROOK_WHITE, "Colebrook-White")                                         \
@@ -108,6 +126,10 @@ WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
 WORD_FUNCTION(kent_device_word, kent_device_kind, kind, DEVICES)
 WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
 WORD_FUNCTION(kent_nature_word, kent_nature, nature, NATURES)
+WORD_FUNCTION(kent_block_policy_word, kent_block_policy, policy, BLOCK_POLICIES)
+WORD_FUNCTION(kent_spread_word, kent_spread, spread, SPREADS)
+WORD_FUNCTION(kent_concrete_code_word, kent_concrete_code, code, CONCRETE_CODES)
+WORD_FUNCTION(kent_length_form_word, kent_length_form, form, LENGTH_FORMS)
 WORD_FUNCTION(kent_friction_word, kent_friction_law, law, FRICTION_LAWS)
 WORD_FUNCTION(kent_axial_support_word, kent_axial_support, support, AXIAL_SUPPORTS)
 

@@ -2,6 +2,7 @@
 #include "kent_sink.h"
 #include "kent_suter.h"
 #include "kent_table.h"
+#include "kent_told_rules.h"
 
 #include <math.h>
 #include <string.h>
@@ -348,42 +349,10 @@ static void list_rules(const kent_listing *l)
         if (listed++ == 0) {
             kent_text_add(l->out, "%sDesign rules\n", l->out->length > 0 ? "\n" : "");
         }
-        kent_text_add(&words, "%s: safety factor %.2f", r->id, r->safety_factor);
-        if (r->soils[0] != '\0') {
-            kent_text_add(&words, " on bearings of the soils %s alone", r->soils);
-        }
-        if (!isnan(r->factor_test)) {
-            kent_text_add(&words, ", under test %.2f", r->factor_test);
-        }
-        kent_text_add(&words, "; ");
-        kent_text_add(&words, "height at most %.2f of the depth of its base; ",
-                      r->height_to_depth);
-        kent_text_add(&words, "width %.2f to %.2f heights; ", r->width_to_height[0],
-                      r->width_to_height[1]);
-        kent_text_add(
-            &words, "thickness from %s; ",
-            kent_shown_with_unit(KENT_LENGTH, l->units, r->least_thickness).text);
-        kent_text_add(
-            &words, "height from %s; ",
-            kent_shown_with_unit(KENT_LENGTH, l->units, r->least_height).text);
-        kent_text_add(&words, "sides in steps of %s; ",
-                      kent_shown_with_unit(KENT_LENGTH, l->units, r->side_step).text);
-        kent_text_add(&words, "no block under less cover than %s; ",
-                      kent_shown_with_unit(KENT_LENGTH, l->units, r->least_cover).text);
-        kent_text_add(
-            &words, "concrete %s; ",
-            kent_shown_with_unit(KENT_UNIT_WEIGHT, l->units, r->concrete_unit_weight)
-                .text);
-        kent_text_add(
-            &words, "ground water %s; ",
-            kent_shown_with_unit(KENT_UNIT_WEIGHT, l->units, r->water_unit_weight)
-                .text);
-        kent_text_add(&words, "friction of a sleeved pipe %.2f of a bare one's; ",
-                      r->wrapped_ratio);
-        kent_text_add(
-            &words, "one block at most %s. Source: %s",
-            kent_shown_with_unit(KENT_VOLUME, l->units, r->largest_volume).text,
-            r->source);
+        kent_text_add(&words, "%s: ", r->id);
+        kent_told_shape(r, l->units, &words);
+        kent_told_asked(r, l->units, &words);
+        kent_text_add(&words, ". Source: %s", r->source);
         kent_table_paragraph(l->out, l->limit, "", kent_text_of(&words));
         l->out->failed = l->out->failed || words.failed;
         kent_text_clear(&words);

@@ -37,6 +37,7 @@ static const coherent COHERENT[] = {
     {KENT_FLOW, "m3/s", 1.0, "ft3/s", 3, 0},
     {KENT_PRESSURE, "kPa", 1e3, "lbf/ft2", -2, 1},
     {KENT_STRESS, "kPa", 1e3, "lbf/ft2", -2, 1},
+    {KENT_STRENGTH, "kPa", 1e3, "lbf/ft2", -2, 1},
     {KENT_MODULUS, "kPa", 1e3, "lbf/ft2", -2, 1},
     {KENT_FORCE, "kN", 1e3, "lbf", 0, 1},
     {KENT_FORCE_PER_LENGTH, "kN/m", 1e3, "lbf/ft", -1, 1},

@@ -21,6 +21,7 @@
     X(KENT_FLOW, "a flow", "m3/s", "L/s", 1, "gpm", 0, "300 L/s", "4800 gpm")          \
     X(KENT_PRESSURE, "a pressure", "Pa", "bar", 2, "psi", 1, "15 bar", "220 psi")      \
     X(KENT_STRESS, "a stress", "Pa", "kPa", 1, "psf", 0, "150 kPa", "3000 psf")        \
+    X(KENT_STRENGTH, "a strength", "Pa", "MPa", 1, "psi", 0, "25 MPa", "4000 psi")     \
     X(KENT_MODULUS, "a modulus", "Pa", "GPa", 1, "ksi", 0, "170 GPa", "24e6 psi")      \
     X(KENT_FORCE, "a force", "N", "kN", 1, "kip", 1, "25 kN", "5600 lbf")              \
     X(KENT_FORCE_PER_LENGTH, "a force per length", "N/m", "kN/m", 2, "lbf/ft", 0,      \

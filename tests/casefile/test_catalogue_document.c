@@ -328,6 +328,52 @@ static void add_rules(kent_text *out, const kent_catalogue *c)
     }
 }
 
+/* 0 asks for nothing. */
+static void add_asked(kent_text *out, double value, int digits)
+{
+    add_number(out, value > 0.0 ? value : (double)NAN, digits);
+}
+
+static void add_asked_by_rules(kent_text *out, const kent_catalogue *c)
+{
+    kent_text_add(
+        out,
+        "\nWhat the same sets ask of blocks and joints beyond their shape; a dash "
+        "asks for nothing.\n\n| id | blocks, under upward thrust | thrust without "
+        "design of the concrete, kN | over the pipe's diameter, behind a fitting, "
+        "m | cover, m, from diameter, mm | ground falls at most, ° | pipe rises at "
+        "most | before the test, MPa, days | sliding, overturning, floating, under "
+        "test | soil above | spread, code | straps, MPa, bond, MPa, mm | "
+        "restrained length, share of a run |\n"
+        "| --- | --- | --- | --- | --- | --- | --- | --- | --- | --- | --- | --- | "
+        "--- |\n");
+    for (size_t i = 0; i < c->rule_count; i++) {
+        const kent_rules *r = &c->rules[i];
+        kent_text_add(out, "| `%s` | %s, %s |", r->id,
+                      kent_block_policy_word(r->blocks),
+                      kent_block_policy_word(r->vertical_blocks));
+        add_asked(out, r->largest_thrust / 1e3, 5);
+        kent_text_add(out, " %.2f, %.2f |", r->height_over_diameter,
+                      r->concrete_behind);
+        kent_text_add(out, " %.2f, %.0f |", r->large_least_cover,
+                      r->large_diameter / MM);
+        add_asked(out, r->steepest_ground * 180.0 / acos(-1.0), 4);
+        add_asked(out, r->steepest_pipe, 4);
+        kent_text_add(out, " %.1f, %.3g |", r->strength_before_test / 1e6,
+                      r->least_age / 86400.0);
+        kent_text_add(out, " %g, %g, %g, %g |", r->factor_sliding,
+                      r->factor_overturning, r->factor_flotation,
+                      r->factor_stability_test);
+        kent_text_add(out, " %s | %s, %s |", r->soil_above ? "yes" : "no",
+                      kent_spread_word(r->spread),
+                      kent_concrete_code_word(r->concrete_code));
+        kent_text_add(out, " %.0f, %.2f, %.0f |", r->strap_stress / 1e6,
+                      r->strap_bond / 1e6, r->strap_diameter / MM);
+        kent_text_add(out, " %s, %g |\n", kent_length_form_word(r->length_form),
+                      r->run_share);
+    }
+}
+
 static void add_document(kent_text *out)
 {
     kent_catalogue *c = read_catalogue();
@@ -343,6 +389,7 @@ static void add_document(kent_text *out)
     add_valves(out, c);
     add_soils(out, c);
     add_rules(out, c);
+    add_asked_by_rules(out, c);
     kent_catalogue_free(c);
 }
 

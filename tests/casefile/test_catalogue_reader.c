@@ -376,6 +376,37 @@ static void rules_may_have_a_factor_of_their_own_under_test(void **state)
     kent_catalogue_free(catalogue);
 }
 
+static void a_set_has_what_it_is_based_on(void **state)
+{
+    (void)state;
+    kent_catalogue *catalogue = NULL;
+    kent_complaints c;
+    const char *text =
+        RULES "soils = \"mine\"; run_share = 0.5; },\n{ id = \"other\"; based_on = "
+              "\"mine\"; least_cover = \"1 m\"; " PROVENANCE "} );\n";
+    assert_int_equal(read_config("rules.cfg", text, &catalogue, &c), KENT_OK);
+    const kent_rules *r = &catalogue->rules[1];
+    assert_string_equal(r->id, "other");
+    assert_string_equal(r->soils, ""); /* a factor's soils are its own set's */
+    assert_close(r->safety_factor, 1.5, 1e-12);
+    assert_close(r->least_cover, 1.0, 1e-12);
+    assert_close(r->run_share, 0.5, 1e-12);
+    kent_catalogue_free(catalogue);
+}
+
+#define SET(says) "format = 1;\nrules = ( { id = \"set\"; " says PROVENANCE "} );\n"
+
+static void a_set_that_is_wrong_is_told(void **state)
+{
+    (void)state;
+    assert_config_refused("rules.cfg", SET("based_on = \"none\"; "),
+                          "there is no set \"none\" above this one");
+    assert_config_refused("rules.cfg", SET("safety_factor = 1.5; "),
+                          "'height_to_depth' is missing; give it, or based_on");
+    assert_config_refused("rules.cfg", RULES "factor_sliding = 0.9; } );\n",
+                          "factor_sliding = 0.9 asks for less than balance");
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -392,6 +423,8 @@ int main(void)
         cmocka_unit_test(tables_of_pipes_that_make_no_sense_are_refused),
         cmocka_unit_test(a_type_of_valve_says_something_of_what_it_passes),
         cmocka_unit_test(rules_may_have_a_factor_of_their_own_under_test),
+        cmocka_unit_test(a_set_has_what_it_is_based_on),
+        cmocka_unit_test(a_set_that_is_wrong_is_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }

@@ -102,6 +102,14 @@ static void words_stand_in_the_order_of_the_models_enumerations(void **state)
     WORDS_AGREE("branch", "joint", 6, kent_joint_word, kent_joint);
     WORDS_AGREE("ground", "trench", KENT_TRENCHES, kent_trench_word, int);
     WORDS_AGREE("fitting", "orientation", 3, kent_orientation_word, kent_orientation);
+    WORDS_AGREE("design_rules", "blocks", 4, kent_block_policy_word, kent_block_policy);
+    WORDS_AGREE("design_rules", "vertical_blocks", 4, kent_block_policy_word,
+                kent_block_policy);
+    WORDS_AGREE("design_rules", "spread", 2, kent_spread_word, kent_spread);
+    WORDS_AGREE("design_rules", "concrete_code", 2, kent_concrete_code_word,
+                kent_concrete_code);
+    WORDS_AGREE("design_rules", "length_form", 2, kent_length_form_word,
+                kent_length_form);
     WORDS_AGREE("fitting", "restraint", 5, kent_restraint_word, kent_restraint_choice);
 }
 
