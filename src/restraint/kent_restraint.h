@@ -11,6 +11,8 @@
 #include "kent_loads.h"
 #include "kent_system.h"
 #include "kent_other_way.h"
+#include "kent_stability.h"
+#include "kent_straps.h"
 
 /* ---- plain functions ------------------------------------------------------------- */
 
@@ -91,8 +93,10 @@ typedef struct kent_block {
     kent_face face;
     double face_thickness, face_utilisation;
     double face_volume; /* m3, not in volume; 0 without a face of its own */
-    bool submerged;     /* gravity, base: weight less the water it displaces */
-    kent_sense sense;   /* that the body is for, its face apart; of utilisation */
+    bool own_side;    /* gravity: its own side is the face, which has no volume then */
+    int widened;      /* steps of the rules by which it was enlarged until it stands */
+    bool submerged;   /* gravity, base: weight less the water it displaces */
+    kent_sense sense; /* that the body is for, its face apart; of utilisation */
 } kent_block;
 
 /* What a restrained length comes to an end in. */
@@ -139,6 +143,8 @@ typedef struct kent_holding {
     size_t other_way_count;
     double factor_asked, factor_reached, utilisation; /* NAN where not held */
     kent_block block;
+    kent_straps straps;       /* of a block that holds something down */
+    kent_stability stability; /* of the block; nothing judged without one */
     double allowable_bearing; /* Pa, of a face at this depth; NAN: none, or not known */
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
