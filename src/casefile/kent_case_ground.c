@@ -84,6 +84,16 @@ static void check_soil(kent_filling *f, kent_record *record, const kent_soil *s)
     }
 }
 
+/* Ground that held nothing, and of which the case says that it was made good. */
+static void caution_made_good(kent_filling *f, const kent_soil *s)
+{
+    if (s->nature == KENT_NATURAL || s->unreliable) return;
+    kent_notes_add(&f->model->cautions,
+                   "soil \"%s\" is %s, and relied on because the case says so; its "
+                   "source should say how it was made good",
+                   s->id, kent_nature_word(s->nature));
+}
+
 void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
 {
     kent_soil *s = &f->model->soils[index];
@@ -104,6 +114,7 @@ void kent_fill_soil(kent_filling *f, kent_record *record, size_t index)
     kent_record_soil(&f->reader, record, s);
     s->place = record->place;
     if (record->sound) check_soil(f, record, s);
+    caution_made_good(f, s);
 }
 
 int kent_fill_soil_index(kent_filling *f, const kent_record *record, const char *key)
@@ -133,6 +144,7 @@ void kent_fill_ground(kent_filling *f)
         g->cover = kent_record_number(&r, "cover");
         g->wrapped = kent_record_switch(&r, "wrapped", false);
         g->trench = kent_record_field(&r, "trench")->index;
+        g->backfill = kent_fill_soil_index(f, &r, "backfill");
     }
     if (there && kent_record_has(&r, "water_table")) {
         g->water_table = kent_record_number(&r, "water_table");
@@ -160,6 +172,16 @@ static void check_overlap(kent_filling *f, kent_record *record, size_t index)
     }
 }
 
+static bool says_ground(const kent_record *record)
+{
+    static const char *const KEYS[] = {"soil",   "cover",    "water_table",
+                                       "trench", "backfill", "casing"};
+    for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
+        if (kent_record_has(record, KEYS[i])) return true;
+    }
+    return false;
+}
+
 void kent_fill_ground_zone(kent_filling *f, kent_record *record, size_t index)
 {
     kent_ground_zone *z = &f->model->ground_zones[index];
@@ -170,19 +192,18 @@ void kent_fill_ground_zone(kent_filling *f, kent_record *record, size_t index)
                             .cover = kent_record_number(record, "cover"),
                             .water_table = kent_record_number(record, "water_table"),
                             .trench = kent_record_field(record, "trench")->index,
-                            .backfill = -1,
+                            .backfill = kent_fill_soil_index(f, record, "backfill"),
+                            .casing = kent_record_switch(record, "casing", false),
                             .place = record->place};
     if (!record->sound) return;
     if (!(z->from < z->to)) {
         kent_record_complain(&f->reader, record, "to",
                              "to must lie beyond from; stations count along the pipe's "
                              "route");
-    } else if (!kent_record_has(record, "soil") && !kent_record_has(record, "cover") &&
-               !kent_record_has(record, "water_table") &&
-               !kent_record_has(record, "trench")) {
+    } else if (!says_ground(record)) {
         kent_record_complain(&f->reader, record, NULL,
                              "it says nothing of the ground; give soil, cover, "
-                             "water_table or trench");
+                             "water_table, trench, backfill or casing");
     } else {
         check_overlap(f, record, index);
     }

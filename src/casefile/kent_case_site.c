@@ -33,6 +33,8 @@ void kent_fill_head(kent_filling *f, const char *path)
     kent_record_copy(&project, "revision", NULL, p->revision, sizeof p->revision);
     kent_record_copy(&project, "designer", NULL, p->designer, sizeof p->designer);
     kent_record_copy(&project, "checker", NULL, p->checker, sizeof p->checker);
+    kent_record_copy(&project, "utility", NULL, p->utility, sizeof p->utility);
+    kent_record_copy(&project, "date", NULL, p->date, sizeof p->date);
 }
 
 void kent_fill_water(kent_filling *f)

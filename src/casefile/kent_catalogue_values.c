@@ -195,20 +195,60 @@ static void read_passive_ratios(kent_reader *r, kent_record *record, kent_soil *
     }
 }
 
+/* How a base holds on to soil: the one that is given takes the other's place. */
+static void read_base(kent_reader *r, kent_record *record, kent_soil *soil)
+{
+    const bool friction = kent_record_has(record, "base_friction");
+    const bool cohesion = kent_record_has(record, "base_cohesion");
+    if (friction && cohesion) {
+        kent_record_complain(r, record, "base_cohesion",
+                             "base_friction and base_cohesion are both given; keep the "
+                             "one that holds concrete on this soil");
+        return;
+    }
+    if (!friction && !cohesion) return;
+    soil->base_friction = kent_record_number(record, "base_friction");
+    soil->base_cohesion = kent_record_number(record, "base_cohesion");
+}
+
+static void read_wall_friction(kent_reader *r, kent_record *record, kent_soil *soil)
+{
+    if (!kent_record_has(record, "wall_friction")) return;
+    soil->wall_friction = kent_record_number(record, "wall_friction");
+    if (record->sound && !(soil->wall_friction <= soil->friction_angle)) {
+        kent_record_complain(r, record, "wall_friction",
+                             isnan(soil->friction_angle)
+                                 ? "wall_friction needs friction_angle, of which it is "
+                                   "a part"
+                                 : "wall_friction is above friction_angle; soil slides "
+                                   "within itself first: give at most that");
+    }
+}
+
+/* What is no natural ground is not relied on unless the case itself says otherwise. */
+static void read_nature(kent_record *record, kent_soil *soil)
+{
+    const int nature = kent_record_field(record, "nature")->index;
+    if (nature >= 0) soil->nature = (kent_nature)nature;
+    const bool doubted = soil->unreliable || soil->nature != KENT_NATURAL;
+    soil->unreliable = kent_record_switch(record, "unreliable", doubted);
+}
+
 void kent_record_soil(kent_reader *r, kent_record *record, kent_soil *soil)
 {
     read_bearing(r, record, soil);
     read_passive_ratios(r, record, soil);
     replace(record, "factor_inside", &soil->factor_inside);
     replace(record, "vertical_bearing", &soil->vertical_bearing);
-    replace(record, "base_friction", &soil->base_friction);
+    read_base(r, record, soil);
     replace(record, "unit_weight", &soil->unit_weight);
     replace(record, "friction_angle", &soil->friction_angle);
     replace(record, "cohesion", &soil->cohesion);
     replace(record, "friction_ratio", &soil->friction_ratio);
     replace(record, "adhesion_ratio", &soil->adhesion_ratio);
     replace(record, "passive_ratio", &soil->passive_ratio);
-    soil->unreliable = kent_record_switch(record, "unreliable", soil->unreliable);
+    read_wall_friction(r, record, soil);
+    read_nature(record, soil);
 }
 
 bool kent_soil_has_bearing(const kent_soil *soil)

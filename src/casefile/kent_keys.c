@@ -98,7 +98,16 @@
                "share of the passive pressure mobilised (restrained length)"),         \
         LIST(g, "passive_ratios", "", "none",                                          \
              "pairs (trench, passive_ratio), where it depends on the trench"),         \
-        SWITCH(g, "unreliable", "false", "peat, fill: no restraint may count on it")
+        QUANTITY(g, "base_cohesion", KENT_STRESS, WITHIN(0.0, 1e6), "none",            \
+                 "adhesion of concrete on soil, in place of base_friction"),           \
+        QUANTITY(g, "wall_friction", KENT_ANGLE, WITHIN(0.0, 0.95993108859688127),     \
+                 "none",                                                               \
+                 "angle of friction between soil and a block's face: Coulomb's "       \
+                 "passive pressure in place of Rankine's"),                            \
+        WORD(g, "nature", "natural|fill|organic|expansive|liquefiable|collapsible",    \
+             "natural", "what the ground is; all but natural is unreliable"),          \
+        SWITCH(g, "unreliable", "false, but of a nature other than natural true",      \
+               "no restraint may count on it; false: it has been made good")
 
 #define BLOCK_POLICIES "allowed|forbidden|old-mains-only|with-joints"
 
@@ -241,6 +250,8 @@ const kent_key KENT_KEYS[] = {
     TEXT("project", "revision", 63, "none", "revision"),
     TEXT("project", "designer", 63, "none", "who designed"),
     TEXT("project", "checker", 63, "none", "who checked"),
+    TEXT("project", "utility", 63, "none", "whose main it is"),
+    TEXT("project", "date", 31, "none", "date of the design"),
 
     QUANTITY("water", "temperature", KENT_TEMPERATURE, WITHIN(273.15, 373.15),
              "15 degC", "gives every property that is not stated"),
@@ -437,6 +448,8 @@ const kent_key KENT_KEYS[] = {
                 "none", "depth of ground water below ground"),
     SWITCH("ground", "wrapped", "false", "pipes are in polyethylene sleeves"),
     WORD("ground", "trench", TRENCHES, "none", "kind of trench (AWWA C150)"),
+    REF("ground", "backfill", "soil", "as the ground",
+        "soil that the trench is filled with: it rubs on the pipe, the ground bears"),
 
     REF("fitting", "at", "point", "none", "point of a fitting found from geometry"),
     ID("fitting", "id", "none", "name of a fitting stated by its ports"),
@@ -709,6 +722,10 @@ const kent_key KENT_KEYS[] = {
                 "the ground's", "depth of ground water below ground"),
     WORD("ground_zone", "trench", TRENCHES, "the ground's",
          "kind of trench (AWWA C150)"),
+    REF("ground_zone", "backfill", "soil", "the ground's",
+        "soil that the trench is filled with"),
+    SWITCH("ground_zone", "casing", "false",
+           "the pipe runs in a casing: no ground holds it there"),
 
     VECTOR("branch", "direction", "to the left, without x and y",
            "out of the fitting: east, north, up"),

@@ -92,6 +92,7 @@ static bool ground_is_valid(const kent_model *m)
         const kent_ground_zone *z = &m->ground_zones[i];
         if (!is_index(z->pipe, m->pipe_count) || !(z->from < z->to) ||
             !is_index_or_none(z->soil, m->soil_count) ||
+            !is_index_or_none(z->backfill, m->soil_count) ||
             !is_trench_or_none(z->trench)) {
             return false;
         }
@@ -103,6 +104,7 @@ static bool ground_is_valid(const kent_model *m)
         }
     }
     return is_index_or_none(m->ground.soil, m->soil_count) &&
+           is_index_or_none(m->ground.backfill, m->soil_count) &&
            is_trench_or_none(m->ground.trench) &&
            are_indices(m->zone_order, m->ground_zone_count, m->ground_zone_count);
 }
@@ -227,6 +229,7 @@ static bool fittings_are_valid(const kent_model *m)
             !is_part(f->obstacle_first, f->obstacle_count, m->obstacle_count) ||
             !is_index_or_none(f->zone, m->ground_zone_count) ||
             !is_trench_or_none(f->trench) ||
+            !is_index_or_none(f->backfill, m->soil_count) ||
             (f->type == KENT_GROUP) > (f->member_count >= 2) ||
             !isfinite(f->angle + f->weight)) {
             return false;

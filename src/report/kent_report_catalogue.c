@@ -331,8 +331,16 @@ static void list_soils(const kent_listing *l)
         kent_table_cell(&t, "%s", s->id);
         bearing(l, &t, s);
         number(&t, s->factor_inside, 2);
-        number(&t, s->base_friction, 2);
-        kent_table_cell(&t, "%s", s->unreliable ? "no" : "yes");
+        if (isnan(s->base_cohesion)) {
+            number(&t, s->base_friction, 2);
+        } else {
+            kent_table_cell(
+                &t, "%s",
+                kent_shown_with_unit(KENT_STRESS, l->units, s->base_cohesion).text);
+        }
+        const bool natural = s->nature == KENT_NATURAL;
+        kent_table_cell(&t, "%s%s%s", s->unreliable ? "no" : "yes", natural ? "" : ", ",
+                        natural ? "" : kent_nature_word(s->nature));
         source(l, &t, s->source);
     }
     finish(l, "Soils: allowable horizontal bearing", &t);

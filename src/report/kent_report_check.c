@@ -12,11 +12,13 @@ static void say_project(const kent_view *v)
     const kent_project *p = &v->model->project;
     const struct {
         const char *word, *value;
-    } rows[] = {{"project", p->number},
+    } rows[] = {{"for", p->utility},
+                {"project", p->number},
                 {"drawing", p->drawing},
                 {"revision", p->revision},
                 {"designed by", p->designer},
-                {"checked by", p->checker}};
+                {"checked by", p->checker},
+                {"date", p->date}};
     kent_text words = {0};
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
         if (rows[i].value[0] == '\0') continue;

@@ -42,6 +42,9 @@ static void say_default(const kent_view *v)
     if (g->trench >= 0) {
         kent_text_add(&words, ", trench %s", kent_trench_word(g->trench));
     }
+    if (g->backfill >= 0) {
+        kent_text_add(&words, ", filled with %s", m->soils[g->backfill].id);
+    }
     kent_text_add(&words, ".");
     kent_view_say(v, "", &words);
     kent_text_clear(&words);
@@ -63,6 +66,10 @@ static void say_zone(const kent_view *v, const kent_ground_zone *z)
     if (z->trench >= 0) {
         kent_text_add(&words, ", trench %s", kent_trench_word(z->trench));
     }
+    if (z->backfill >= 0) {
+        kent_text_add(&words, ", filled with %s", m->soils[z->backfill].id);
+    }
+    if (z->casing) kent_text_add(&words, ", in a casing, where nothing holds it");
     kent_text_add(&words, ".");
     kent_view_say(v, "-  ", &words);
     kent_text_clear(&words);
@@ -103,6 +110,10 @@ static void say_soil(const kent_view *v, const kent_soil *s)
     kent_text words = {0};
     kent_shown a;
     kent_text_add(&words, "%s: ", s->id);
+    if (s->nature != KENT_NATURAL) {
+        kent_text_add(&words, "%s, %s", kent_nature_word(s->nature),
+                      s->unreliable ? "" : "made good, ");
+    }
     if (s->unreliable) {
         kent_text_add(&words, "not to be relied on, holds nothing");
     } else {
@@ -114,11 +125,17 @@ static void say_soil(const kent_view *v, const kent_soil *s)
         const char *name;
     } values[] = {{s->unit_weight, KENT_UNIT_WEIGHT, "weighs"},
                   {s->friction_angle, KENT_ANGLE, "friction angle"},
-                  {s->cohesion, KENT_STRESS, "cohesion"}};
+                  {s->cohesion, KENT_STRESS, "cohesion"},
+                  {s->wall_friction, KENT_ANGLE, "friction on a face"},
+                  {s->base_cohesion, KENT_STRESS, "holds concrete by"},
+                  {s->vertical_bearing, KENT_STRESS, "bears a base by"}};
     for (size_t i = 0; i < sizeof values / sizeof values[0]; i++) {
         if (isnan(values[i].value)) continue;
         kent_text_add(&words, "; %s %s", values[i].name,
                       said(v, values[i].kind, values[i].value, &a));
+    }
+    if (!isnan(s->base_friction)) {
+        kent_text_add(&words, "; friction of concrete %.2f", s->base_friction);
     }
     if (s->source[0] != '\0') kent_text_add(&words, " (%s)", s->source);
     kent_view_say(v, "-  ", &words);

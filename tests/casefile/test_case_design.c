@@ -411,8 +411,8 @@ static const struct {
     {"\"0+250\"", "\"0+100\"", 17,
      "ground zone 1: to must lie beyond from; stations count along the pipe's route"},
     {ZONE, "", 17,
-     "ground zone 1: it says nothing of the ground; give soil, cover, water_table or "
-     "trench"},
+     "ground zone 1: it says nothing of the ground; give soil, cover, water_table, "
+     "trench, backfill or casing"},
     {"\"250 m\"", "\"249.9 m\"", 18,
      "ground zone 2: it overlaps the zone of the same pipe at line 17; let one end "
      "where "

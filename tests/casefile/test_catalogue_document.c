@@ -291,14 +291,18 @@ static void add_soils(kent_text *out, const kent_catalogue *c)
         "eight times for the same words: an id\nnames its table, and every value has "
         "to be confirmed on site. Parameters of restrained length are not\ngiven: a "
         "case states them.\n\n"
-        "| id | bearing, kPa | factor inside | friction of concrete | relied on | "
-        "source (status) |\n| --- | --- | --- | --- | --- | --- |\n");
+        "| id | bearing, kPa | factor inside | friction of concrete | its adhesion, "
+        "kPa | "
+        "nature | relied on | source (status) |\n"
+        "| --- | --- | --- | --- | --- | --- | --- | --- |\n");
     for (size_t i = 0; i < c->soil_count; i++) {
         const kent_soil *s = &c->soils[i];
         kent_text_add(out, "| `%s` |", s->id);
         add_bearing(out, s);
         add_number(out, s->factor_inside, 3);
         add_number(out, s->base_friction, 3);
+        add_number(out, s->base_cohesion / 1e3, 3);
+        kent_text_add(out, " %s |", kent_nature_word(s->nature));
         kent_text_add(out, " %s | %s |\n", s->unreliable ? "no" : "yes", s->source);
     }
 }

@@ -24,6 +24,8 @@ static void check_common(const kent_soil *s, bool nothing, double friction)
 {
     assert_close(s->factor_inside, 1.0, 1e-12);
     assert_int_equal(s->unreliable, nothing);
+    assert_int_equal(s->nature, nothing ? KENT_ORGANIC : KENT_NATURAL);
+    assert_true(isnan(s->wall_friction));
     if (friction > 0.0) {
         assert_close(s->base_friction, friction, 1e-12);
     } else {
@@ -168,6 +170,11 @@ static void bearings_by_gradient_are_those_of_the_building_code(void **state)
         assert_close(s->bearing_gradient, ROWS[i].gradient * PCF, 1e-12);
         check_common(s, false, ROWS[i].friction);
         assert_non_null(strstr(s->source, "table 1806.2"));
+        if (strcmp(s->id, "clay-CL-by-gradient-IBC") == 0) {
+            assert_close(s->base_cohesion, 130.0 * PSF, 1e-12);
+        } else {
+            assert_true(isnan(s->base_cohesion));
+        }
     }
     assert_int_equal(c->soil_count, 23 + 11 + 5);
     kent_catalogue_free(c);

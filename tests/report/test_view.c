@@ -235,8 +235,17 @@ static void every_route_of_bearing_is_told_with_its_numbers(void **state)
     s->by_depth[1] = (kent_depth_row){1.2, 60e3};
     s->by_depth_count = 2;
     assert_says(&b, KENT_SI, "by depth: 30.0 kPa at 0.60 m, 60.0 kPa at 1.20 m");
+    s->nature = KENT_FILL;
+    s->base_cohesion = 6e3;
+    s->wall_friction = 0.25 * acos(-1.0) / 3.0;
+    assert_says(&b, KENT_SI, "loam: fill, made good, bears");
+    assert_says(&b, KENT_SI, "friction on a face 15.0°; holds concrete by 6.0 kPa");
     s->unreliable = true;
+    assert_says(&b, KENT_SI, "loam: fill, not to be relied on, holds nothing");
+    s->nature = KENT_NATURAL;
     assert_says(&b, KENT_SI, "loam: not to be relied on, holds nothing");
+    b.model->ground.backfill = soil;
+    assert_says(&b, KENT_SI, "filled with loam");
     kent_build_clear(&b);
 }
 

@@ -1,0 +1,113 @@
+/* What a case says of restraint beyond soils and loads, from text to model. */
+#include "case_text.h"
+
+#include <math.h>
+
+static const double DEGREE = 3.14159265358979323846 / 180.0;
+
+/* A sound case with a piece put in place of another; the caller frees neither. */
+static kent_model *with(const kent_catalogue *c, const char *from, const char *to)
+{
+    char *text = replaced(DESIGN_CASE, from, to);
+    kent_model *m = read_sound(c, text);
+    free(text);
+    assert_true(kent_model_is_valid(m));
+    return m;
+}
+
+/* ---- ground ---------------------------------------------------------------------- */
+
+#define GROUND "ground = { soil = \"sand-SP\""
+
+static void what_is_no_natural_ground_is_not_relied_on_unasked(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *keys;
+        kent_nature nature;
+        bool unreliable;
+        size_t cautions;
+    } ROWS[] = {
+        {"", KENT_NATURAL, false, 0},
+        {"nature = \"natural\"; unreliable = true;", KENT_NATURAL, true, 0},
+        {"nature = \"fill\";", KENT_FILL, true, 0},
+        {"nature = \"liquefiable\";", KENT_LIQUEFIABLE, true, 0},
+        {"nature = \"collapsible\"; unreliable = false;", KENT_COLLAPSIBLE, false, 1},
+        {"from = \"peat-PT\";", KENT_ORGANIC, true, 0}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char piece[300];
+        (void)snprintf(
+            piece, sizeof piece,
+            "soils = ( { id = \"bank\"; allowable_bearing = \"90 kPa\"; %s } "
+            ");\nground = { soil = \"bank\"",
+            ROWS[i].keys);
+        kent_model *m = with(c, GROUND, piece);
+        assert_int_equal(m->soils[0].nature, ROWS[i].nature);
+        assert_int_equal(m->soils[0].unreliable, ROWS[i].unreliable);
+        assert_int_equal(cautions_with(m, "how it was made good"), ROWS[i].cautions);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+static void a_base_is_held_by_friction_or_by_adhesion(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m =
+        with(c, GROUND,
+             "soils = ( { id = \"bank\"; from = \"bedrock-by-gradient-IBC\"; "
+             "base_cohesion = \"6 kPa\"; friction_angle = \"30 deg\"; "
+             "wall_friction = \"15 deg\"; } );\nground = { soil = \"bank\"");
+    assert_close(m->soils[0].base_cohesion, 6e3, 1e-12);
+    assert_true(isnan(m->soils[0].base_friction)); /* the row's 0.70 has gone */
+    assert_close(m->soils[0].wall_friction, 15.0 * DEGREE, 1e-12);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_trench_is_filled_with_what_is_said_of_it(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = with(c, GROUND, GROUND "; backfill = \"gravel-GP-Moser\"");
+    assert_string_equal(m->soils[m->ground.backfill].id, "gravel-GP-Moser");
+    assert_int_equal(m->ground_zones[0].backfill, -1);
+    assert_false(m->ground_zones[0].casing);
+    kent_model_free(m);
+    m = with(c, "soil = \"soft-clay-CH\";", "backfill = \"silt-ML\"; casing = true;");
+    assert_int_equal(m->ground.backfill, -1);
+    assert_string_equal(m->soils[m->ground_zones[0].backfill].id, "silt-ML");
+    assert_true(m->ground_zones[0].casing);
+    assert_true(kent_model_ground_at(m, 0, 150.0).casing);
+    assert_false(kent_model_ground_at(m, 0, 50.0).casing);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+/* ---- the project ----------------------------------------------------------------- */
+
+static void a_project_has_a_utility_and_a_date(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = with(c, GROUND,
+                         "project = { utility = \"Drumlow Water\"; date = "
+                         "\"2026-05-04\"; };\n" GROUND);
+    assert_string_equal(m->project.utility, "Drumlow Water");
+    assert_string_equal(m->project.date, "2026-05-04");
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(what_is_no_natural_ground_is_not_relied_on_unasked),
+        cmocka_unit_test(a_base_is_held_by_friction_or_by_adhesion),
+        cmocka_unit_test(a_trench_is_filled_with_what_is_said_of_it),
+        cmocka_unit_test(a_project_has_a_utility_and_a_date),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
