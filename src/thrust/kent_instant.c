@@ -84,10 +84,22 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
     return out;
 }
 
-/* Still water at ports. shut: an open end is closed, and under pressure too. */
+/* Which ports still water presses on. */
+typedef struct kent_wet {
+    int only;  /* that alone; -1: all */
+    int dry;   /* all but that; -1 */
+    bool shut; /* an open end is closed, and under pressure too */
+} kent_wet;
+
+static bool is_wet(const kent_wet *wet, const kent_port *port, size_t i)
+{
+    if (port->kind == KENT_PORT_OUTLET && !wet->shut) return false;
+    return (wet->only < 0 || (size_t)wet->only == i) && wet->dry != (int)i;
+}
+
 static kent_instant instant_of_still_water(const kent_model *m, const kent_fitting *f,
                                            const kent_port *ports, size_t count,
-                                           double pressure, int only, bool shut)
+                                           double pressure, kent_wet wet)
 {
     kent_instant out = {.set = true,
                         .time = NAN,
@@ -96,8 +108,7 @@ static kent_instant instant_of_still_water(const kent_model *m, const kent_fitti
 
     for (size_t i = 0; i < count; i++) {
         kent_port_state *s = &out.balance.port[i];
-        const bool open = ports[i].kind == KENT_PORT_OUTLET && !shut;
-        if (!open && (only < 0 || (size_t)only == i)) {
+        if (is_wet(&wet, &ports[i], i)) {
             s->pressure = pressure + pressure_below_centre(m, f, &ports[i]);
         }
         s->momentum_factor = kent_port_momentum_factor(m, &ports[i], 0.0);
@@ -110,7 +121,14 @@ kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
                                   double pressure, int only)
 {
     return instant_of_still_water(m, f, &m->ports[f->port_first], f->port_count,
-                                  pressure, only, false);
+                                  pressure, (kent_wet){only, -1, false});
+}
+
+kent_instant kent_instant_emptied(const kent_model *m, const kent_fitting *f,
+                                  double pressure, size_t dry)
+{
+    return instant_of_still_water(m, f, &m->ports[f->port_first], f->port_count,
+                                  pressure, (kent_wet){-1, (int)dry, false});
 }
 
 kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,
@@ -119,7 +137,8 @@ kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,
     kent_port ports[KENT_PORTS];
     const size_t count = kent_load_case_ports(m, f, c, ports);
 
-    return instant_of_still_water(m, f, ports, count, pressure, -1, true);
+    return instant_of_still_water(m, f, ports, count, pressure,
+                                  (kent_wet){-1, -1, true});
 }
 
 /* The branch without a pipe as a leg: what joins it may slip, so that the pressure acts

@@ -123,24 +123,121 @@ static kent_load_case *loads_add_pressed(const kent_model *m, kent_fitting_loads
     return c;
 }
 
-/* A valve shut with the most that can press on one side and nothing behind (9.4). */
+/* The march with the lowest head at a fitting; march_count: none was run. */
+static size_t lowest_march(const kent_recorder *r, size_t fitting)
+{
+    size_t lowest = r->model->march_count;
+    double head = INFINITY;
+
+    for (size_t i = 0; i < r->model->march_count; i++) {
+        if (!kent_recorder_counts(r, i)) continue;
+        if (!(r->slots[i].seen[fitting].lowest < head)) continue;
+        head = r->slots[i].seen[fitting].lowest;
+        lowest = i;
+    }
+    return lowest;
+}
+
+/* The lowest pressure of all marches, where it is suction, with the flows of that
+ * instant (9.17). */
+static void loads_add_suction(const kent_recorder *r, size_t fitting,
+                              kent_fitting_loads *loads)
+{
+    const size_t index = lowest_march(r, fitting);
+
+    if (index == r->model->march_count) return;
+    const kent_march march = r->model->marches[index];
+    const kent_model *m = r->steadies[march.state]->model;
+    const kent_seen *seen = &r->slots[index].seen[fitting];
+    const kent_fitting *f = &m->fittings[fitting];
+    const kent_instant i = kent_instant_of_frame(m, f, &seen->frame_lowest);
+    if (!(kent_model_pressure(m, seen->lowest, f->at.z) < 0.0)) return;
+    kent_load_case *c = loads_add(m, loads, KENT_CASE_SUCTION, march);
+    case_name(m, c, "suction");
+    c->lowest = c->highest = i;
+    case_fill(c, &i);
+}
+
+/* "closed from R1", by the next point of a leg. */
+static kent_load_case *loads_add_shut(const kent_model *m, const kent_fitting *f,
+                                      size_t port, const char *way,
+                                      const kent_press *most, kent_fitting_loads *loads)
+{
+    const int toward = m->ports[f->port_first + port].toward;
+    char name[sizeof((kent_load_case *)NULL)->name];
+
+    (void)snprintf(name, sizeof name, "closed %s %s", way,
+                   m->points[toward >= 0 ? toward : f->point].id);
+    return loads_add_pressed(m, loads, most, name);
+}
+
+/* A valve or leg shut with the most that can press on one side and nothing behind (9.4,
+ * 9.16). */
 static void loads_add_closed(const kent_recorder *r, const kent_site_test *test,
                              size_t fitting, size_t side, kent_fitting_loads *loads)
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
-    const int toward = m->ports[f->port_first + side].toward;
     const kent_press most = kent_press_most(r, test, fitting, side, false);
     kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
-    char name[sizeof((kent_load_case *)NULL)->name];
+    kent_load_case *c = loads_add_shut(m, f, side, "from", &most, loads);
 
-    (void)snprintf(name, sizeof name, "closed from %s",
-                   m->points[toward >= 0 ? toward : f->point].id);
-    kent_load_case *c = loads_add_pressed(m, loads, &most, name);
     i.time = most.time;
     c->closed = true;
     c->pressed = side;
     case_fill(c, &i);
+}
+
+/* Of all legs but one, what asks for most. */
+static kent_press press_beside(const kent_recorder *r, const kent_site_test *test,
+                               size_t fitting, size_t dry)
+{
+    const kent_fitting *f = &r->model->fittings[fitting];
+    kent_press most = {.pressure = NAN};
+
+    for (size_t k = 0; k < f->port_count; k++) {
+        if (k == dry || r->model->ports[f->port_first + k].kind != KENT_PORT_SPAN) {
+            continue;
+        }
+        kent_press_take(r->model, &most, kent_press_most(r, test, fitting, k, false));
+    }
+    return most;
+}
+
+/* A leg shut and emptied, with the most that can press on all the others (9.16). */
+static void loads_add_emptied(const kent_recorder *r, const kent_site_test *test,
+                              size_t fitting, size_t dry, kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[fitting];
+    const kent_press most = press_beside(r, test, fitting, dry);
+
+    if (isnan(most.pressure)) return; /* no other leg is a pipe */
+    kent_instant i = kent_instant_emptied(m, f, most.pressure, dry);
+    kent_load_case *c = loads_add_shut(m, f, dry, "to", &most, loads);
+    i.time = most.time;
+    c->emptied = true;
+    c->dry = dry;
+    case_fill(c, &i);
+}
+
+/* Each leg that can be shut: under pressure alone, where something behind it presses,
+ * and empty beside the others. */
+static int loads_add_legs(const kent_recorder *r, const kent_site_test *test,
+                          size_t index, kent_fitting_loads *loads)
+{
+    const kent_model *m = r->model;
+    const kent_fitting *f = &m->fittings[index];
+    bool supplied[KENT_PORTS] = {false};
+
+    if (!kent_fitting_has_shut_legs(m, f)) return 0;
+    if (kent_ports_supplied(m, f, supplied)) return -1;
+    for (size_t i = 0; i < f->port_count; i++) {
+        if (!kent_port_shuts(m, f, i)) continue;
+        if (supplied[i]) loads_add_closed(r, test, index, i, loads);
+        loads_add_emptied(r, test, index, i, loads);
+    }
+    return 0;
 }
 
 /* Whether a pipe may be joined to a branch that pushes nothing as built: its end is no
@@ -182,7 +279,7 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
-    const size_t most = 5 + m->state_count + m->march_count + KENT_PORTS;
+    const size_t most = 6 + m->state_count + m->march_count + 2 * KENT_PORTS;
 
     loads->cases = kent_alloc(most, sizeof *loads->cases);
     if (!loads->cases) return -1;
@@ -206,9 +303,11 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
     for (size_t i = 0; i < m->march_count; i++) {
         if (kent_recorder_counts(r, i)) loads_add_march(r, index, i, loads);
     }
+    loads_add_suction(r, index, loads);
     for (size_t i = 0; i < f->port_count && f->type == KENT_VALVE; i++) {
         if (kent_fitting_shuts(m, f, i)) loads_add_closed(r, test, index, i, loads);
     }
+    if (loads_add_legs(r, test, index, loads)) return -1;
     if (may_be_extended(m, f)) loads_add_extended(r, test, index, loads);
     for (size_t i = 0; i < loads->count; i++) {
         loads->cases[i].test = test;

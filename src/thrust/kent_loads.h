@@ -95,6 +95,12 @@ void kent_loads_free(kent_loads_result *l);
 /* N: the thrust without the force of the changing flow (8.7), which never governs. */
 kent_vec3 kent_instant_lasting(const kent_instant *i);
 
+/* Whether a leg of a branching fitting can be shut, so that it is under pressure alone,
+ * or empty beside the others: as the case states, else every pipe at a cross or wye.
+ * Never of a valve, for which kent_fitting_shuts tells. source docs/theory 9.16 */
+bool kent_port_shuts(const kent_model *m, const kent_fitting *f, size_t port);
+bool kent_fitting_has_shut_legs(const kent_model *m, const kent_fitting *f);
+
 /* The ports that a case's balance is made of, in its order: the fitting's own and,
  * where a branch is extended, that branch behind them. Returns how many. */
 size_t kent_load_case_ports(const kent_model *m, const kent_fitting *f,

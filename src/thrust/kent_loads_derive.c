@@ -73,7 +73,7 @@ static double sheet_head(const kent_sheet *s, double pressure)
 /* Whether a case is of one instant of moving water, each port with its own head. */
 static bool of_heads(const kent_load_case *c)
 {
-    return !c->given && !c->closed && !c->extended &&
+    return !c->given && !c->closed && !c->emptied && !c->extended &&
            (c->scenario >= 0 || c->kind == KENT_CASE_STEADY);
 }
 
@@ -282,6 +282,12 @@ static void sheet_own_level(const kent_sheet *s, size_t i)
         "8.14", "gauge pressure at the port");
 }
 
+/* Behind a closed valve, or a leg that is shut. */
+static bool is_dry(const kent_load_case *c, size_t i)
+{
+    return (c->closed && i != c->pressed) || (c->emptied && i == c->dry);
+}
+
 static void sheet_port_pressure(const kent_sheet *s, size_t i)
 {
     const size_t n = i + 1, w = s->widest + 1;
@@ -294,13 +300,12 @@ static void sheet_port_pressure(const kent_sheet *s, size_t i)
     } else if (is_outlet(&s->ports[i]) && !s->load->extended) {
         kent_sheet_put(s, symbol, 0.0, KENT_PRESSURE, KENT_COMPUTED,
                        "open to the air: no gauge pressure");
-    } else if (s->load->closed) {
-        if (i == s->load->pressed) {
-            sheet_pressure(s, symbol.s, pressure);
-        } else {
-            kent_sheet_put(s, symbol, 0.0, KENT_PRESSURE, KENT_ASSUMED,
-                           "nothing behind the closed valve");
-        }
+    } else if (is_dry(s->load, i)) {
+        kent_sheet_put(s, symbol, 0.0, KENT_PRESSURE, KENT_ASSUMED,
+                       s->load->closed ? "nothing behind the closed valve"
+                                       : "this leg is shut and empty");
+    } else if (s->load->closed && isnan(s->ports[i].level)) {
+        sheet_pressure(s, symbol.s, pressure);
     } else if (s->fitting->type == KENT_VALVE) {
         sheet_pressure(s, symbol.s, pressure);
     } else if (!isnan(s->ports[i].level)) {
@@ -471,7 +476,8 @@ void kent_loads_derive(const kent_model *m, const kent_fitting *fitting,
         if (instant->balance.port[i].flow != 0.0) s.moving = true;
     }
     sheet_water(&s);
-    if (!load->given && !load->closed && fitting->type != KENT_VALVE &&
+    const bool centre = !load->closed || fitting->type == KENT_GROUP;
+    if (!load->given && centre && fitting->type != KENT_VALVE &&
         !(of_heads(load) && sheet_has_levels(&s))) {
         sheet_pressure(&s, "p", instant->pressure);
     }

@@ -72,12 +72,18 @@ double kent_press_later(const kent_model *m, const kent_fitting *f)
     return from_gauge(m, f, m->loads.future_pressure, m->loads.future_gauge);
 }
 
+/* On each unit of pressure, of soil that may bear more in some cases. */
+static double asks_for(const kent_model *m, kent_case_kind kind)
+{
+    return kent_press_factor(m, kind) / m->loads.bearing_increase[kind];
+}
+
 /* Keeps the one that asks for more: with factors of their own the higher pressure need
  * not be it. */
-static void press_take(const kent_model *m, kent_press *most, kent_press p)
+void kent_press_take(const kent_model *m, kent_press *most, kent_press p)
 {
-    const double asks = kent_press_factor(m, p.kind) * p.pressure;
-    const double asked = kent_press_factor(m, most->kind) * most->pressure;
+    const double asks = asks_for(m, p.kind) * p.pressure;
+    const double asked = asks_for(m, most->kind) * most->pressure;
 
     if (isnan(p.pressure)) return; /* there is no such case */
     if (isnan(most->pressure) || asks > asked + SAME * fabs(asked)) *most = p;
@@ -92,7 +98,7 @@ static void press_take_marches(const kent_recorder *r, size_t fitting, size_t po
         if (!kent_recorder_counts(r, i)) continue;
         const kent_seen *seen = &r->slots[i].seen[fitting];
         const double head = whole ? seen->highest : seen->highest_head[port];
-        press_take(
+        kent_press_take(
             m, most,
             (kent_press){
                 .kind = kent_press_kind_of(&m->scenarios[m->marches[i].scenario]),
@@ -112,10 +118,10 @@ kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
     kent_press most = {KENT_CASE_TEST, false, kent_press_of_test(m, test, f), NAN,
                        none};
 
-    press_take(
+    kent_press_take(
         m, &most,
         (kent_press){KENT_CASE_STATIC, false, kent_press_static(m, f), NAN, none});
-    press_take(
+    kent_press_take(
         m, &most,
         (kent_press){KENT_CASE_SHUT_OFF, false,
                      kent_model_pressure(m, kent_shut_off_level(m, leg->span), f->at.z),
@@ -123,15 +129,16 @@ kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
     for (size_t s = 0; s < m->state_count; s++) {
         const double head =
             kent_steady_head(m, r->steadies[s], leg->span, leg->chainage);
-        press_take(m, &most,
-                   (kent_press){KENT_CASE_STEADY,
-                                false,
-                                kent_model_pressure(m, head, f->at.z),
-                                NAN,
-                                {-1, (int)s}});
+        kent_press_take(m, &most,
+                        (kent_press){KENT_CASE_STEADY,
+                                     false,
+                                     kent_model_pressure(m, head, f->at.z),
+                                     NAN,
+                                     {-1, (int)s}});
     }
-    press_take(m, &most,
-               (kent_press){KENT_CASE_STATIC, true, kent_press_later(m, f), NAN, none});
+    kent_press_take(
+        m, &most,
+        (kent_press){KENT_CASE_STATIC, true, kent_press_later(m, f), NAN, none});
     press_take_marches(r, fitting, port, whole, &most);
     return most;
 }

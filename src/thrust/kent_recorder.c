@@ -177,6 +177,7 @@ static int recorder_add_fitting(kent_recorder *r, size_t state, size_t index)
         }
     }
     sensor->crossing = fitting_crossing(m, f);
+    sensor->faces = f->type == KENT_VALVE || kent_fitting_has_shut_legs(m, f);
     return 0;
 }
 
@@ -464,7 +465,7 @@ bool kent_recorder_counts(const kent_recorder *r, size_t march)
            !m->scenarios[m->marches[march].scenario].for_comparison;
 }
 
-/* The highest head on each side of a valve: what presses on it once it is shut. */
+/* The highest head at each port: what presses there once something is shut. */
 static void seen_take_faces(const kent_recorder *r, const kent_trace *trace,
                             size_t index, kent_seen *seen)
 {
@@ -515,7 +516,7 @@ void kent_recorder_take(kent_recorder *r, int march, const kent_trace *trace)
         if (!kent_fitting_in_network(f)) continue;
         seen_take(r, &sensors[i], slot, trace, i);
         seen_take_heads(r, slot, trace, i);
-        if (f->type == KENT_VALVE) seen_take_faces(r, trace, i, &slot->seen[i]);
+        if (sensors[i].faces) seen_take_faces(r, trace, i, &slot->seen[i]);
     }
     slot_take_past(r, slot, trace);
 }

@@ -23,6 +23,7 @@ typedef struct kent_term {
 typedef struct kent_sensor { /* of one fitting in one state: beta is that state's */
     size_t term_first, term_count;
     size_t watch[KENT_PORTS];  /* by port; of one without a pipe the reference port's */
+    bool faces;                /* each port's highest head is wanted */
     bool outlet;               /* it has an open end: */
     double brings[KENT_PORTS]; /* by port: +1, -1 of those with pipes, else 0 */
     kent_vec3 per_outlet_square; /* N s2/m6, on the square of what they bring (8.13) */
@@ -39,7 +40,7 @@ typedef struct kent_seen {    /* of one fitting in one march */
     kent_frame frame[KENT_SENSES];
     double lowest, highest; /* m, head of the widest port */
     kent_frame frame_lowest, frame_highest;
-    double highest_head[KENT_PORTS], highest_at[KENT_PORTS]; /* m, s; in-line valves */
+    double highest_head[KENT_PORTS], highest_at[KENT_PORTS]; /* m, s; of faces */
     unsigned long long top;                                  /* highest level met */
     unsigned
         at_level[KENT_LEVELS]; /* instants by level, the lowest bits of which index */
@@ -90,6 +91,16 @@ kent_instant kent_instant_of_frame(const kent_model *m, const kent_fitting *f,
  * end, or at port `only` alone. */
 kent_instant kent_instant_at_rest(const kent_model *m, const kent_fitting *f,
                                   double pressure, int only);
+
+/* The balance at rest under one pressure at every port but an open end and the dry one.
+ */
+kent_instant kent_instant_emptied(const kent_model *m, const kent_fitting *f,
+                                  double pressure, size_t dry);
+
+/* By port, whether something behind it could press on it with the fitting itself shut
+ * off: a fixed level, a pump, a tank or vessel. Returns -1 without memory. */
+int kent_ports_supplied(const kent_model *m, const kent_fitting *f,
+                        bool supplied[KENT_PORTS]);
 
 /* The balance at rest of a branch extended: every end closed, under one pressure. */
 kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,

@@ -116,16 +116,19 @@ static void check_end(const kent_sheet *s)
                          "check: the resultant, away from the pipe");
 }
 
-static void check_valve(const kent_sheet *s)
+static void check_closed(const kent_sheet *s)
 {
     const kent_port_state *p = s->instant->balance.port;
+    const size_t n = s->load->pressed + 1;
 
-    if (s->load->closed) {
-        const size_t n = s->load->pressed + 1;
-        kent_sheet_work(s, kent_say("C"), p[s->load->pressed].pressure_force,
-                        KENT_FORCE, kent_say("p_%zu*A_%zu", n, n), "9.4",
-                        "check: the resultant, away from the pressed side");
-    } else if (s->count == 2) {
+    kent_sheet_work(s, kent_say("C"), p[s->load->pressed].pressure_force, KENT_FORCE,
+                    kent_say("p_%zu*A_%zu", n, n), "9.4",
+                    "check: the resultant, away from the pressed side");
+}
+
+static void check_valve(const kent_sheet *s)
+{
+    if (s->count == 2) {
         check_along_axis(s);
     } else {
         kent_sheet_heading(
@@ -198,6 +201,11 @@ static void check_group(const kent_sheet *s)
 
 void kent_sheet_check(const kent_sheet *s)
 {
+    if (s->load->closed) {
+        check_closed(s);
+        return;
+    }
+    if (s->load->emptied) return; /* the sum above is all there is */
     switch (s->fitting->type) {
     case KENT_BEND:
         check_bend(s);
