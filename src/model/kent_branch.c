@@ -18,7 +18,7 @@ bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
                         kent_seat device, size_t legs, kent_complaints *complaints)
 {
     const bool branch = note->branch.end != KENT_BRANCH_NONE;
-    const bool served = note->role != KENT_ROLE_NONE;
+    const bool served = note->role != KENT_ROLE_NONE && !kent_role_on_run(note->role);
     const bool end = note->role == KENT_ROLE_HYDRANT && legs == 1;
 
     if (!branch && !served) return true;

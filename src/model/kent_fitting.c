@@ -168,8 +168,9 @@ static int natural_type(const kent_site *site)
         }
         const double turn = site->schematic ? (site->note ? site->note->angle : 0.0)
                                             : kent_ports_turn(site->ports);
-        return turn > KENT_LEAST_TURN ? (int)KENT_BEND
-                                      : (int)NO_FITTING; /* NAN: none */
+        if (turn > KENT_LEAST_TURN) return KENT_BEND; /* NAN: none */
+        return site->note && kent_role_on_run(site->note->role) ? (int)KENT_STRAIGHT
+                                                                : (int)NO_FITTING;
     }
     if (site->count + branch == 3) {
         return branch_angle_of(site) < KENT_WYE_BELOW ? KENT_WYE : KENT_TEE;

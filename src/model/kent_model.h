@@ -1148,6 +1148,7 @@ kent_place kent_device_place(const kent_model *m, const kent_device *d);
 /* Words as in the case file and in results: "bend", "dead-end", "push-on" ... */
 const char *kent_fitting_type_word(kent_fitting_type type);
 const char *kent_role_word(kent_role role); /* "tapping-tee" ...; "": none */
+bool kent_role_on_run(kent_role role); /* something on the main itself, no branch */
 const char *kent_branch_end_word(kent_branch_end end);
 const char *kent_trench_word(int trench); /* "type-1" ...; "" for -1 */
 const char *kent_orientation_word(kent_orientation orientation);

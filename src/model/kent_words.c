@@ -140,6 +140,12 @@ const char *kent_trench_word(int trench)
     return trench >= 0 && trench < KENT_TRENCHES ? WORDS[trench] : "";
 }
 
+bool kent_role_on_run(kent_role role)
+{
+    return role == KENT_ROLE_MANHOLE || role == KENT_ROLE_WALL ||
+           role == KENT_ROLE_FLANGE_ADAPTOR;
+}
+
 bool kent_joint_slips(kent_joint joint)
 {
     return joint == KENT_PUSH_ON || joint == KENT_MECHANICAL;

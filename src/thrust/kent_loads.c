@@ -346,6 +346,7 @@ kent_status kent_recorder_finish(const kent_recorder *r, const kent_worst *surge
     for (size_t i = 0; i < count; i++) {
         if (loads_of_fitting(r, &loads->test, i, &loads->fittings[i])) goto done;
     }
+    if (kent_along_finish(r, loads, err)) goto done;
     *out = loads;
     loads = NULL; /* handed over */
     status = KENT_OK;
@@ -360,6 +361,8 @@ void kent_loads_free(kent_loads_result *l)
     for (size_t i = 0; i < l->fitting_count; i++) {
         free(l->fittings[i].cases);
     }
+    kent_runs_free(l->runs, l->run_count);
+    kent_strings_clear(&l->strings);
     free(l->fittings);
     free(l);
 }

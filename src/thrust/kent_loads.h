@@ -9,7 +9,9 @@
 #include "kent_balance.h"
 #include "kent_derivation.h"
 #include "kent_marcher.h"
+#include "kent_run.h"
 #include "kent_site_test.h"
+#include "kent_string.h"
 
 /* The four ways a thrust can be worst. */
 typedef enum kent_sense {
@@ -63,6 +65,9 @@ typedef struct kent_loads_result {
     kent_fitting_loads *fittings; /* [fitting_count] */
     size_t fitting_count;
     kent_site_test test;
+    kent_run *runs; /* [run_count] above ground */
+    size_t run_count;
+    kent_strings strings; /* of fused and welded pipe */
 } kent_loads_result;
 
 typedef struct kent_recorder kent_recorder;

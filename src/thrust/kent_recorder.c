@@ -14,9 +14,8 @@ static const double USUAL_SPEED = 1.0;
 
 /* ---- what to watch --------------------------------------------------------------- */
 
-/* Index of the watch at a place, added where it is new among those from `first` on. */
-static int recorder_watch(kent_recorder *r, size_t first, int span, double chainage,
-                          size_t *index)
+int kent_recorder_watch(kent_recorder *r, size_t first, int span, double chainage,
+                        size_t *index)
 {
     for (size_t i = first; i < r->watch_count; i++) {
         if (r->watches[i].span != span) continue;
@@ -147,7 +146,8 @@ static int recorder_watch_fitting(kent_recorder *r, const kent_fitting *f,
     for (size_t i = 0; i < f->port_count; i++) {
         const kent_port *port = &ports[i];
         if (port->kind != KENT_PORT_SPAN) continue;
-        if (recorder_watch(r, first, port->span, port->chainage, &watch[i])) return -1;
+        if (kent_recorder_watch(r, first, port->span, port->chainage, &watch[i]))
+            return -1;
     }
     for (size_t i = 0; i < f->port_count; i++) {
         if (ports[i].kind != KENT_PORT_SPAN) watch[i] = watch[widest];
@@ -198,9 +198,10 @@ kent_status kent_recorder_new(const kent_model *m, kent_steady *const *steadies,
             if (recorder_add_fitting(r, s, i)) goto done;
         }
     }
+    status = kent_along_new(r, err);
+    if (status != KENT_OK) goto done;
     *out = r;
     r = NULL; /* handed over */
-    status = KENT_OK;
 done:
     kent_recorder_free(r);
     return status ? kent_error_nomem(err) : KENT_OK;
@@ -213,6 +214,7 @@ void kent_recorder_free(kent_recorder *r)
         free(r->slots[i].seen);
         free(r->slots[i].past);
     }
+    kent_along_free(r->along);
     free(r->slots);
     free(r->sensors);
     free(r->terms);
@@ -259,6 +261,7 @@ void kent_recorder_start(kent_recorder *r, int march, double step)
     slot->seen = kent_alloc(count, sizeof *slot->seen);
     slot->past = kent_alloc(slot->past_rows * r->watch_count, sizeof *slot->past);
     slot->failed = !slot->seen || !slot->past;
+    kent_along_start(r, march);
     for (size_t i = 0; i < count && !slot->failed; i++) {
         kent_seen *seen = &slot->seen[i];
         seen->best[KENT_RESULTANT] = -1.0; /* nil counts as a resultant */
@@ -518,5 +521,6 @@ void kent_recorder_take(kent_recorder *r, int march, const kent_trace *trace)
         seen_take_heads(r, slot, trace, i);
         if (sensors[i].faces) seen_take_faces(r, trace, i, &slot->seen[i]);
     }
+    kent_along_take(r, march, trace);
     slot_take_past(r, slot, trace);
 }

@@ -2,7 +2,7 @@
 #ifndef KENT_RECORDER_INTERNAL_H
 #define KENT_RECORDER_INTERNAL_H
 
-#include "kent_loads.h"
+#include "kent_along_internal.h"
 
 /* Heads and flows at a fitting's ports at one instant. */
 typedef struct kent_frame {
@@ -64,6 +64,7 @@ struct kent_recorder {
     size_t term_count, term_capacity;
     kent_sensor *sensors; /* [state_count][fitting_count]; watches are the same */
     kent_slot *slots;     /* [march_count] */
+    kent_along *along;    /* runs and strings */
 };
 
 /* Level of a squared resultant. */
