@@ -1,6 +1,16 @@
 /* What the soil gives a face, in the hand calculation: by its route, and the passive
  * coefficient that this takes. */
+#include "kent_earth.h"
 #include "kent_holding_internal.h"
+
+#include <stdio.h>
+
+/* What counts on ground that falls before the face: Lf of what is stated, or Kp
+ * outright. */
+static const char *name_of_stated(const kent_holding_work *w)
+{
+    return w->site.falls > 0.0 ? "qo" : "q";
+}
 
 /* Effective stress at the axis: sv. */
 static void derive_stress(const kent_holding_work *w, double unit_weight,
@@ -23,15 +33,51 @@ static void derive_stress(const kent_holding_work *w, double unit_weight,
                          "effective weight of soil above the axis");
 }
 
+/* The same as the mean over the tallest face, where the water table cuts it: sm. */
+static const char *derive_mean_stress(const kent_holding_work *w, kent_derivation *d)
+{
+    const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
+    const kent_soil *s = w->site.leans;
+    const double cut = kent_face_cut(at.depth, at.face, at.water_table);
+
+    derive_stress(w, s->unit_weight, kent_soil_source(s), d);
+    if (!(cut > 0.0)) return "sv";
+    if (!(at.water_table < at.depth)) {
+        kent_derivation_put(d, "gw", at.water, KENT_UNIT_WEIGHT, KENT_CATALOGUE,
+                            "unit weight of ground water");
+        kent_derivation_put(d, "zw", at.water_table, KENT_LENGTH, KENT_GIVEN,
+                            "depth of the water table");
+    }
+    kent_derivation_put(d, "hm", at.face, KENT_LENGTH, KENT_COMPUTED,
+                        "height of the tallest face here, which the water table cuts");
+    kent_derivation_work(d, "sm", kent_mean_stress(s->unit_weight, &at), KENT_STRESS,
+                         at.water_table < at.depth
+                             ? "sv - gw*(hm/2 - axis + zw)^2/(2*hm)"
+                             : "sv - gw*(hm/2 - zw + axis)^2/(2*hm)",
+                         "21.6", "mean of it over that face");
+    return "sm";
+}
+
+/* Pa: what the soil bears here on level ground. */
+static double level_bearing(const kent_holding_work *w)
+{
+    kent_bearing_gap gap = KENT_BEARING_KNOWN;
+    kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
+
+    at.falls = 0.0;
+    return kent_soil_bearing(w->site.leans, &at, &gap);
+}
+
 static void derive_constant(const kent_holding_work *w, kent_derivation *d)
 {
-    kent_derivation_put(d, "q", w->site.allowable, KENT_STRESS,
-                        kent_soil_source(w->soil), "allowable bearing of the soil");
+    kent_derivation_put(d, name_of_stated(w), level_bearing(w), KENT_STRESS,
+                        kent_soil_source(w->site.leans),
+                        "allowable bearing of the soil");
 }
 
 static void derive_by_depth(const kent_holding_work *w, kent_derivation *d)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_source from = kent_soil_source(s);
     const double axis = kent_site_axis(&w->site);
     const size_t last = s->by_depth_count - 1;
@@ -40,7 +86,7 @@ static void derive_by_depth(const kent_holding_work *w, kent_derivation *d)
     if (axis >= s->by_depth[last].depth) {
         kent_derivation_put(d, "z1", s->by_depth[last].depth, KENT_LENGTH, from,
                             "last depth of the soil's table");
-        kent_derivation_put(d, "q", w->site.allowable, KENT_STRESS, from,
+        kent_derivation_put(d, name_of_stated(w), level_bearing(w), KENT_STRESS, from,
                             "allowable bearing there, and no more below it");
         return;
     }
@@ -54,42 +100,101 @@ static void derive_by_depth(const kent_holding_work *w, kent_derivation *d)
     kent_derivation_put(d, "z2", row[1].depth, KENT_LENGTH, from,
                         "row of the soil's table below the axis");
     kent_derivation_put(d, "q2", row[1].bearing, KENT_STRESS, from, "its bearing");
-    kent_derivation_work(d, "q", w->site.allowable, KENT_STRESS,
+    kent_derivation_work(d, name_of_stated(w), level_bearing(w), KENT_STRESS,
                          "q1 + (q2 - q1)*(axis - z1)/(z2 - z1)", "10.21",
                          "allowable bearing at the axis");
 }
 
 static void derive_gradient(const kent_holding_work *w, kent_derivation *d)
 {
-    kent_derivation_put(d, "G", w->soil->bearing_gradient, KENT_UNIT_WEIGHT,
-                        kent_soil_source(w->soil), "allowable bearing per depth");
-    kent_derivation_work(d, "q", w->site.allowable, KENT_STRESS, "G*axis", "10.22",
-                         "allowable bearing at the axis");
+    kent_derivation_put(d, "G", w->site.leans->bearing_gradient, KENT_UNIT_WEIGHT,
+                        kent_soil_source(w->site.leans), "allowable bearing per depth");
+    kent_derivation_work(d, name_of_stated(w), level_bearing(w), KENT_STRESS, "G*axis",
+                         "10.22", "allowable bearing at the axis");
+}
+
+static void derive_slope(const kent_holding_work *w, kent_derivation *d)
+{
+    kent_derivation_put(d, "fall", w->site.falls, KENT_ANGLE, KENT_GIVEN,
+                        "fall of the ground along the thrust");
+}
+
+/* The coefficient square to the face: Kh, or Kp by Rankine. */
+static const char *derive_coefficient(const kent_holding_work *w, kent_derivation *d)
+{
+    const kent_soil *s = w->site.leans;
+    const kent_source from = kent_soil_source(s);
+    const kent_way way = kent_soil_way(s);
+    const bool rubs = way == KENT_WAY_COULOMB, falls = w->site.falls > 0.0;
+    const double value = kent_way_passive(s, way, w->site.falls);
+
+    kent_derivation_put(d, "phi", s->friction_angle, KENT_ANGLE, from,
+                        "friction angle of the soil");
+    if (falls) derive_slope(w, d);
+    if (rubs) {
+        kent_derivation_put(d, "dw", s->wall_friction, KENT_ANGLE, from,
+                            "friction angle of soil on the face");
+    }
+    if (s->cohesion > 0.0 || !(rubs || falls)) {
+        kent_derivation_work(d, "Kp", kent_rankine_passive(s->friction_angle),
+                             KENT_RATIO, "(1 + sin(phi))/(1 - sin(phi))", "10.18",
+                             "passive coefficient by Rankine");
+    }
+    if (!rubs && !falls) return "Kp";
+    kent_derivation_work(
+        d, "Kh", value, KENT_RATIO,
+        rubs ? (falls ? "(cos(phi)/(1 - sqrt(sin(phi + dw)*sin(phi - "
+                        "fall)/(cos(dw)*cos(fall)))))^2"
+                      : "(cos(phi)/(1 - sqrt(sin(phi + dw)*sin(phi)/cos(dw))))^2")
+             : "(cos(phi)/(1 - sqrt(sin(phi)*sin(phi - fall)/cos(fall))))^2",
+        "21.2", "passive coefficient by Coulomb, square to the face");
+    return "Kh";
 }
 
 static void derive_passive(const kent_holding_work *w, kent_derivation *d)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_source from = kent_soil_source(s);
+    const bool sticks = !(w->site.falls > 0.0);
+    const bool plain = sticks && kent_soil_way(s) == KENT_WAY_RANKINE;
+    const char *stress = derive_mean_stress(w, d);
+    const char *k = derive_coefficient(w, d);
+    char formula[64];
 
-    derive_stress(w, s->unit_weight, from, d);
-    kent_derivation_put(d, "phi", s->friction_angle, KENT_ANGLE, from,
-                        "friction angle of the soil");
-    kent_derivation_put(d, "c", s->cohesion, KENT_STRESS, from, "cohesion");
-    kent_derivation_work(d, "Kp", kent_rankine_passive(s->friction_angle), KENT_RATIO,
-                         "(1 + sin(phi))/(1 - sin(phi))", "10.18",
-                         "passive coefficient by Rankine");
+    if (sticks && (plain || s->cohesion > 0.0)) {
+        kent_derivation_put(d, "c", s->cohesion, KENT_STRESS, from, "cohesion");
+        (void)snprintf(formula, sizeof formula, "mp*(%s*%s + 2*c*sqrt(Kp))", k, stress);
+    } else {
+        (void)snprintf(formula, sizeof formula, "mp*%s*%s", k, stress);
+    }
     kent_derivation_put(d, "mp", s->passive_share, KENT_RATIO, from,
                         "share of the passive pressure to count on");
+    kent_derivation_work(d, "q", w->site.allowable, KENT_STRESS, formula,
+                         plain ? "10.23" : "21.8", "allowable bearing at the axis");
+}
+
+/* What falling ground leaves of a stated bearing: q of qo. */
+static void derive_falling(const kent_holding_work *w, kent_derivation *d)
+{
+    const kent_soil *s = w->site.leans;
+
+    if (!(w->site.falls > 0.0)) return;
+    kent_derivation_put(d, "phi", s->friction_angle, KENT_ANGLE, kent_soil_source(s),
+                        "friction angle of the soil");
+    derive_slope(w, d);
+    kent_derivation_work(
+        d, "Kf", kent_falling_passive(s->friction_angle, 0.0, w->site.falls),
+        KENT_RATIO, "(cos(phi)/(1 - sqrt(sin(phi)*sin(phi - fall)/cos(fall))))^2",
+        "21.2", "passive coefficient with that fall");
     kent_derivation_work(d, "q", w->site.allowable, KENT_STRESS,
-                         "mp*(Kp*sv + 2*c*sqrt(Kp))", "10.23",
-                         "allowable bearing at the axis");
+                         "qo*Kf*(1 - sin(phi))/(1 + sin(phi))", "21.7",
+                         "what the fall leaves of the bearing");
 }
 
 /* The passive coefficient that the bearing takes: Ki. */
 static void derive_claim(const kent_holding_work *w, kent_derivation *d)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
     kent_bearing_claim claim;
 
@@ -98,10 +203,11 @@ static void derive_claim(const kent_holding_work *w, kent_derivation *d)
     if (s->route != KENT_BEARING_PASSIVE) {
         derive_stress(w, claim.unit_weight,
                       claim.weight_assumed ? KENT_ASSUMED : kent_soil_source(s), d);
-        if (sticks) {
-            kent_derivation_put(d, "c", s->cohesion, KENT_STRESS, kent_soil_source(s),
-                                "cohesion");
-        }
+    }
+    const bool said = s->route == KENT_BEARING_PASSIVE && !(w->site.falls > 0.0);
+    if (sticks && !said) {
+        kent_derivation_put(d, "c", s->cohesion, KENT_STRESS, kent_soil_source(s),
+                            "cohesion");
     }
     if (inside) {
         kent_derivation_put(d, "fi", s->factor_inside, KENT_RATIO, kent_soil_source(s),
@@ -116,7 +222,7 @@ static void derive_claim(const kent_holding_work *w, kent_derivation *d)
 
 void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d)
 {
-    switch (w->soil->route) {
+    switch (w->site.leans->route) {
     case KENT_BEARING_CONSTANT:
         derive_constant(w, d);
         break;
@@ -130,5 +236,6 @@ void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d)
         derive_passive(w, d);
         break;
     }
+    if (w->site.leans->route != KENT_BEARING_PASSIVE) derive_falling(w, d);
     derive_claim(w, d);
 }

@@ -35,45 +35,6 @@ kent_block kent_block_none(void)
     };
 }
 
-/* source docs/theory/10-blocks.md, 10.1 */
-double kent_site_axis(const kent_site *site)
-{
-    return site->cover + 0.5 * site->diameter;
-}
-
-kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules)
-{
-    return (kent_bearing_place){
-        .depth = kent_site_axis(site),
-        .water_table = site->water_table,
-        .water = rules->water_unit_weight,
-    };
-}
-
-void kent_site_bear(kent_site *site, const kent_rules *rules)
-{
-    const kent_bearing_place at = kent_site_place(site, rules);
-    const kent_soil *soil = site->soil;
-
-    site->allowable = NAN;
-    site->vertical = NAN;
-    site->gap = KENT_BEARING_KNOWN;
-    if (!soil) return;
-    site->allowable = kent_soil_bearing(soil, &at, &site->gap);
-    site->vertical = soil->vertical_bearing;
-    if (isnan(site->vertical) && soil->route == KENT_BEARING_CONSTANT) {
-        site->vertical = soil->allowable_bearing;
-    }
-}
-
-/* source docs/theory/10-blocks.md, 10.12. A depth that is not known (NAN) counts as
- * under water where there is any. */
-double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth)
-{
-    const bool dry = isinf(site->water_table) || depth <= site->water_table;
-    return rules->concrete_unit_weight - (dry ? 0.0 : rules->water_unit_weight);
-}
-
 /* source docs/theory/10-blocks.md, 10.7 */
 double kent_block_thickness(const kent_rules *rules, kent_face face, double diameter)
 {
@@ -96,7 +57,9 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
 
     out->bearing_area = sideways / site->allowable;
     if (isnan(site->cover)) return KENT_FAULT_COVER_UNSTATED;
-    if (site->cover < rules->least_cover - COVER_SLACK) return KENT_FAULT_SHALLOW;
+    if (site->cover < kent_rules_cover(rules, site->diameter) - COVER_SLACK) {
+        return KENT_FAULT_SHALLOW;
+    }
     if (!(site->allowable > 0.0)) return KENT_FAULT_BEARING;
     if (!kent_face_choose(rules, out->bearing_area + site->hole, limit, &out->face)) {
         return KENT_FAULT_FACE;
@@ -118,7 +81,8 @@ double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,
         kent_site_bear(&deeper, rules);
         const double area = sideways / deeper.allowable + deeper.hole;
         const double limit = kent_face_height_limit(rules, kent_site_axis(&deeper));
-        if (deeper.cover < rules->least_cover - COVER_SLACK) continue;
+        const double least = kent_rules_cover(rules, deeper.diameter);
+        if (deeper.cover < least - COVER_SLACK) continue;
         if (!(deeper.allowable > 0.0)) continue;
         if (kent_face_choose(rules, area, limit, &face)) return deeper.cover;
     }

@@ -27,8 +27,8 @@ static void derive_reached(const kent_holding_work *w, kent_holding *h,
     kent_derivation_work(d, "SFr", asked / use, KENT_RATIO, "SF/u", "10.10",
                          "factor reached");
     if (sense == KENT_UPWARD) return; /* weight has no factor inside */
-    const double inside = w->soil->factor_inside;
-    kent_derivation_put(d, "fi", inside, KENT_RATIO, kent_soil_source(w->soil),
+    const double inside = w->site.leans->factor_inside;
+    kent_derivation_put(d, "fi", inside, KENT_RATIO, kent_soil_source(w->site.leans),
                         inside > 1.0 ? "factor already inside the soil's value"
                                      : "no factor is inside the soil's value");
     if (inside <= 1.0) return;

@@ -8,14 +8,17 @@
  * and the block's own weight. */
 #define KENT_BLOCK_NEGLIGIBLE 0.02
 
-typedef struct kent_site { /* what a block stands in; m, Pa */
-    double diameter;       /* outside, of the largest pipe */
-    double cover;          /* ground to crown; NAN: not stated */
-    double water_table;    /* below ground; INFINITY: none */
-    double allowable;      /* on a face at this depth; NAN: not known, as gap says */
-    double vertical;       /* under a base; NAN: not stated */
-    double hole;           /* m2 of a face that the pipe passes through; 0: none */
-    const kent_soil *soil; /* NULL: not stated */
+typedef struct kent_site {  /* what a block stands in; m, Pa */
+    double diameter;        /* outside, of the largest pipe */
+    double cover;           /* ground to crown; NAN: not stated */
+    double water_table;     /* below ground; INFINITY: none */
+    double allowable;       /* on a face at this depth; NAN: not known, as gap says */
+    double vertical;        /* under a base; NAN: not stated */
+    double hole;            /* m2 of a face that the pipe passes through; 0: none */
+    double falls;           /* rad, that the ground falls along the thrust; 0 */
+    const kent_soil *soil;  /* NULL: not stated */
+    const kent_soil *fill;  /* between face and ground; NULL: the face meets ground */
+    const kent_soil *leans; /* whichever of them is weaker: what allowable is of */
     kent_bearing_gap gap;
 } kent_site;
 
@@ -34,17 +37,23 @@ typedef enum kent_fault {
     KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
     KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
     KENT_FAULT_SOIL_UNSTATED,
-    KENT_FAULT_SOIL /* peat, fill: nothing may count on it */
+    KENT_FAULT_SLOPE, /* the ground before the face falls more than the rules allow */
+    KENT_FAULT_FILL,  /* fill before the face that is not stated, or bears nothing */
+    KENT_FAULT_SHARE, /* of block and joints, which part is the block's is not stated */
+    KENT_FAULT_SOIL   /* peat, fill: nothing may count on it */
 } kent_fault;
 
 kent_block kent_block_none(void); /* nothing: NAN, and no concrete */
 
 double kent_site_axis(const kent_site *site); /* m below ground */
 
+/* m: the least cover that the rules want over a pipe of a diameter (m). */
+double kent_rules_cover(const kent_rules *rules, double diameter);
+
 /* Where a face centred on the pipe stands. */
 kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules);
 
-/* Works out allowable, vertical and gap from the site's soil and depth. */
+/* Works out allowable, vertical, leans and gap from the site's soils and depth. */
 void kent_site_bear(kent_site *site, const kent_rules *rules);
 
 /* N/m3 of concrete whose base lies at depth (m): buoyed where any of it is under water.

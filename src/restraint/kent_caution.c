@@ -4,8 +4,8 @@
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
 static const double KNOCK = 0.1;
 
-/* N: beyond it the concrete itself wants designing. CIRIA Report 128 (1994) covers
- * blocks to about this thrust without. */
+/* N: beyond it the concrete itself wants designing, where the rules set no other. CIRIA
+ * Report 128 (1994) covers blocks to about this thrust without. */
 static const double LARGE = 1000e3;
 
 /* The highest pressure of any sense of a case, Pa; NAN: none set. */
@@ -58,7 +58,7 @@ static void caution_peak(const kent_holding_work *w, kent_holding *h)
 /* Whether the ground can be as strong as its bearing says, at this depth. */
 static void caution_bearing(const kent_holding_work *w, kent_holding *h)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_system units = w->m->units;
     const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
     kent_bearing_claim claim;
@@ -89,15 +89,17 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
  * its own angle and cohesion, although another bearing is stated. source 10.33 */
 static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_system units = w->m->units;
     const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
 
     if (!s || h->by_sense[KENT_SIDEWAYS] < 0) return;
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
     const double presses = w->use[KENT_SIDEWAYS] * w->site.allowable / c->safety_factor;
-    const double gives = kent_passive_pressure(
-        s->friction_angle, s->cohesion, kent_effective_stress(s->unit_weight, &at));
+    kent_bearing_gap gap = KENT_BEARING_KNOWN;
+    kent_soil own = *s;
+    own.passive_share = 1.0;
+    const double gives = kent_way_bearing(&own, KENT_WAY_RANKINE, &at, &gap);
     if (!(presses > gives)) return; /* NaN: not known */
     kent_notes_add(
         &h->cautions,
@@ -118,7 +120,9 @@ static void caution_wet(const kent_holding_work *w, kent_holding *h)
     double deepest = -INFINITY; /* m below ground, where a stated value is taken */
 
     if (!w->soil) return;
-    if (face && w->soil->route != KENT_BEARING_PASSIVE) deepest = kent_site_axis(site);
+    if (face && site->leans->route != KENT_BEARING_PASSIVE) {
+        deepest = kent_site_axis(site);
+    }
     if (w->demand.load[KENT_DOWNWARD] > 0.0) {
         const double foot =
             base ? 0.5 * site->diameter + b->thickness : 0.5 * b->height;
@@ -177,6 +181,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     if (b->type == KENT_BLOCK_BEARING || b->has_face) {
         caution_bearing(w, h);
         caution_own_strength(w, h);
+        kent_ground_caution(w, h);
     }
     caution_wet(w, h);
     if (w->site.hole > 0.0) {
@@ -203,9 +208,11 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     if (isnan(w->fitting->water_table) && w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions, "no water table is stated: none is assumed");
     }
-    if (h->design_thrust > LARGE) {
+    const double asked = w->m->rules.largest_thrust;
+    const double large = asked > 0.0 ? asked : LARGE;
+    if (h->design_thrust > large) {
         kent_notes_add(&h->cautions, "beyond %s the concrete itself must be designed",
-                       kent_said_of(KENT_FORCE, units, LARGE).s);
+                       kent_said_of(KENT_FORCE, units, large).s);
     }
 }
 
@@ -214,7 +221,9 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
     const kent_fitting_type type = w->fitting->type;
     const bool branch = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
 
-    if (h->chosen != KENT_RESTRAINED_JOINTS || h->leg_count == 0) return;
+    const bool joints =
+        h->chosen == KENT_RESTRAINED_JOINTS || h->chosen == KENT_BLOCK_AND_JOINTS;
+    if (!joints || h->leg_count == 0) return;
     if (branch) {
         kent_notes_add(&h->cautions,
                        "the restrained length of a branch takes no credit "
@@ -237,6 +246,7 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
     if (h->soil_beside) {
         caution_bearing(w, h);
         caution_own_strength(w, h);
+        kent_ground_caution(w, h);
     }
     if (h->soil_beside && h->held) {
         kent_notes_add(
@@ -276,8 +286,9 @@ static void caution_couple(const kent_holding_work *w, kent_holding *h)
  * with restrained joints, lean on the side of the trench. */
 static void caution_near(const kent_holding_work *w, kent_holding *h)
 {
-    const bool joints = h->held && h->chosen == KENT_RESTRAINED_JOINTS &&
-                        kent_leg_bears(w->fitting, w->pull);
+    const bool chosen =
+        h->chosen == KENT_RESTRAINED_JOINTS || h->chosen == KENT_BLOCK_AND_JOINTS;
+    const bool joints = h->held && chosen && kent_leg_bears(w->fitting, w->pull);
 
     if (!h->soil_beside && !joints) return;
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {

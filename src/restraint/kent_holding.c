@@ -101,7 +101,8 @@ static kent_fault holding_soil_fault(const kent_holding_work *w)
         w->demand.load[KENT_SIDEWAYS] > 0.0 || w->demand.load[KENT_DOWNWARD] > 0.0;
 
     if (!w->soil) return leans ? KENT_FAULT_SOIL_UNSTATED : KENT_FAULT_NONE;
-    return kent_soil_counts(w->soil) ? KENT_FAULT_NONE : KENT_FAULT_SOIL;
+    if (!kent_soil_counts(w->soil)) return KENT_FAULT_SOIL;
+    return kent_holding_ground_fault(w);
 }
 
 /* A gravity block may stand under a thrust that is downward alone. */
@@ -146,6 +147,9 @@ static void holding_reach(kent_holding_work *w, kent_holding *h)
 static void holding_block(kent_holding_work *w, kent_holding *h)
 {
     w->fault = holding_soil_fault(w);
+    if (h->chosen == KENT_BLOCK_AND_JOINTS && isnan(h->block_share)) {
+        w->fault = KENT_FAULT_SHARE;
+    }
     if (w->fault == KENT_FAULT_NONE) {
         w->fault = kent_block_size(&w->m->rules, &w->site, &w->demand, &h->block);
     }
@@ -209,22 +213,50 @@ static double leg_use(const kent_holding_work *w, const kent_leg *leg)
     return leg->pipes > 0 ? leg->length / (leg->pipes * laying) : 1.0;
 }
 
-static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
+/* Whether the legs hold the thrust, or the joints' part of it; *use: how much of what
+ * they could, where they do. */
+static bool joints_hold(const kent_holding_work *w, const kent_holding *h,
+                        size_t wanted, double *use)
 {
     const bool either = kent_leg_rule_of(w->fitting)->either;
     size_t fitting = 0;
-    double use = 0.0;
 
+    *use = 0.0;
     for (size_t i = 0; i < h->leg_count; i++) {
         if (!h->legs[i].fits) continue;
         fitting++;
-        use = fmax(use, leg_use(w, &h->legs[i]));
+        *use = fmax(*use, leg_use(w, &h->legs[i]));
     }
-    h->held = wanted > 0 && (either ? fitting > 0 : fitting == wanted);
+    return wanted > 0 && (either ? fitting > 0 : fitting == wanted);
+}
+
+static void holding_joints(kent_holding_work *w, kent_holding *h, size_t wanted)
+{
+    double use = 0.0;
+
+    h->held = joints_hold(w, h, wanted, &use);
     holding_govern(w, h, KENT_RESULTANT);
     if (!h->held) return;
     h->utilisation = use;
     h->factor_reached = h->factor_asked / use;
+}
+
+/* Block and joints: both must do their part, and whichever uses more is told. */
+static void holding_both(kent_holding_work *w, kent_holding *h, size_t wanted)
+{
+    const bool block = h->held;
+    double use = 0.0;
+
+    h->held = joints_hold(w, h, wanted, &use) && block;
+    if (!h->held) {
+        h->block = kent_block_none();
+        h->utilisation = NAN;
+        h->factor_reached = NAN;
+    } else if (use > h->utilisation) {
+        holding_govern(w, h, KENT_RESULTANT);
+        h->utilisation = use;
+        h->factor_reached = h->factor_asked / use;
+    }
 }
 
 /* A sleeve holds on to a main that lay there before: what its joints do is not known.
@@ -242,6 +274,7 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
 {
     if (on_old_main(w)) {
         w->lack |= KENT_LACK_OLD_MAIN;
+        if (h->chosen == KENT_BLOCK_AND_JOINTS) holding_both(w, h, 0);
         return;
     }
     const kent_leg_rule *rule = kent_leg_rule_of(w->fitting);
@@ -262,4 +295,5 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
         h->restrained_length = fmax(h->restrained_length, work.length);
     }
     if (h->chosen == KENT_RESTRAINED_JOINTS) holding_joints(w, h, wanted);
+    if (h->chosen == KENT_BLOCK_AND_JOINTS) holding_both(w, h, wanted);
 }

@@ -73,8 +73,17 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     }
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
                         kent_factor_source(w->m, c), kent_factor_says(w->m, c));
-    kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
-                         word->formula_factored, "10.11", "factored load");
+    if (sense != KENT_RESULTANT && h->block_share < 1.0) {
+        (void)snprintf(says, sizeof says, "bs*%s", word->formula_factored);
+        kent_derivation_put(d, "bs", h->block_share, KENT_RATIO, KENT_GIVEN,
+                            "part of the thrust that the block is for");
+        kent_derivation_work(d, word->factored,
+                             h->block_share * c->safety_factor * part, KENT_FORCE, says,
+                             "21.10", "factored load on the block");
+    } else {
+        kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
+                             word->formula_factored, "10.11", "factored load");
+    }
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
                    w->loads->cases[h->runner_up].title.s);

@@ -32,6 +32,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     const kent_soil *lacking; /* whose values are missing; NULL */
     kent_vec3 pull;           /* N, the thrust that the legs are worked out for */
     double pull_factor;
+    bool blocks_forbidden;         /* by the rules: joints stand in for one */
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
     kent_couple couple;            /* nil but of a group */
     double alone;                  /* N, see kent_couple_alone */
@@ -54,8 +55,18 @@ kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,
  * else 0. source docs/theory/10-blocks.md, 10.31 */
 double kent_couple_alone(const kent_model *m, const kent_fitting *group,
                          const kent_fitting_loads *loads);
-void kent_holding_size(kent_holding_work *w, kent_holding *h); /* what holds */
-void kent_holding_legs(kent_holding_work *w, kent_holding *h); /* side by side */
+/* Where it stands, once what pushes it is known: the fill behind it, the fall of the
+ * ground along the thrust, and what may be leant on. */
+void kent_holding_site(kent_holding_work *w, kent_holding *h);
+bool kent_holding_leans_both_ways(const kent_holding_work *w, const kent_holding *h);
+/* What of slope or fill keeps a face from being sized. */
+kent_fault kent_holding_ground_fault(const kent_holding_work *w);
+/* What the rules make of the restraint that is chosen, and which part of the thrust a
+ * block is for. */
+void kent_holding_policy(kent_holding_work *w, kent_holding *h);
+void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
+void kent_holding_routes(kent_holding_work *w, kent_holding *h); /* bearing by each */
+void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
 /* One leg of the fitting in whole pipes; what it meets goes to w's met. */
 kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work);
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */
@@ -64,6 +75,8 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would h
 bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h);
 
 void kent_holding_caution(kent_holding_work *w, kent_holding *h);
+/* Of slope, fill, and how the bearing is told. */
+void kent_ground_caution(const kent_holding_work *w, kent_holding *h);
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 
 /* Parts of the hand calculation; all add to h's derivation. */

@@ -62,7 +62,8 @@ static bool soil_bears(const kent_soil *soil)
 
 bool kent_soil_counts(const kent_soil *soil)
 {
-    return soil != NULL && !soil->unreliable && soil_bears(soil);
+    return soil != NULL && !soil->unreliable && soil->nature == KENT_NATURAL &&
+           soil_bears(soil);
 }
 
 const kent_soil *kent_point_soil(const kent_model *m, int point)

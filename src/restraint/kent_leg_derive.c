@@ -123,7 +123,10 @@ static void derive_pull(const kent_holding_work *w, const kent_holding *h,
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
     char says[120];
 
-    (void)snprintf(says, sizeof says, "whole thrust, case '%s'", c->name);
+    (void)snprintf(says, sizeof says, "%s, case '%s'",
+                   h->joints_share < 1.0 ? "the joints' part of the thrust"
+                                         : "whole thrust",
+                   c->name);
     kent_derivation_put(d, "T", kent_vec3_length(w->pull), KENT_FORCE, KENT_COMPUTED,
                         says);
     kent_derivation_put(d, "SF", k->factor, KENT_RATIO, kent_factor_source(w->m, c),

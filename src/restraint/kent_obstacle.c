@@ -38,12 +38,6 @@ static lying lying_of(const kent_holding_work *w, const kent_holding *h,
     };
 }
 
-/* A block through which the thrust may come from either side leans on both. */
-static bool leans_both_ways(const kent_holding_work *w, const kent_holding *h)
-{
-    return w->site.hole > 0.0 || h->chosen == KENT_ANCHOR_BLOCK;
-}
-
 bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
 {
     const kent_wedge wedge = wedge_of(w, &h->block);
@@ -54,7 +48,7 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[first + i];
         lying it = lying_of(w, h, &wedge, o, 1.0);
-        if (leans_both_ways(w, h)) {
+        if (kent_holding_leans_both_ways(w, h)) {
             const lying other = lying_of(w, h, &wedge, o, -1.0);
             it.clear = fmin(it.clear, other.clear);
             it.runs_past = it.runs_past || other.runs_past;

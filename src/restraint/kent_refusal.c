@@ -67,13 +67,12 @@ static void refuse_face(const kent_holding_work *w, const kent_holding *h, kent_
 }
 
 /* How far it is to ground that can be relied on, along each pipe of the fitting. */
-static void refuse_soil(const kent_holding_work *w, kent_text *t)
+static bool sound_ground(const kent_holding_work *w, kent_text *t)
 {
     const kent_model *m = w->m;
     const kent_fitting *f = w->fitting;
     const char *sep = "carry the restraint ";
 
-    kent_text_add(t, "the soil here, '%s', gives no restraint: ", w->soil->id);
     for (size_t k = 0; k < f->port_count; k++) {
         const kent_port *p = &m->ports[f->port_first + k];
         if (p->span < 0 || p->toward < 0) continue;
@@ -94,13 +93,94 @@ static void refuse_soil(const kent_holding_work *w, kent_text *t)
         }
         sep = " and ";
     }
-    kent_text_add(t, "%ssupport the fitting on piles", sep[0] == ' ' ? ", or " : "");
+    return sep[0] == ' ';
+}
+
+/* What is wrong with ground of each nature. */
+static const char *nature_says(kent_nature nature)
+{
+    switch (nature) {
+    case KENT_NATURAL:
+        return "";
+    case KENT_FILL:
+        return " a fill not placed under control,";
+    case KENT_ORGANIC:
+        return " organic ground that yields without end,";
+    case KENT_EXPANSIVE:
+        return " ground that swells and shrinks with its water,";
+    case KENT_LIQUEFIABLE:
+        return " ground that turns liquid when it is shaken,";
+    case KENT_COLLAPSIBLE:
+        return " ground that collapses once it is wetted, as a leak would,";
+    }
+    return "";
+}
+
+/* What makes it good, or does without it. */
+static const char *nature_way_out(kent_nature nature)
+{
+    switch (nature) {
+    case KENT_NATURAL:
+        return "support the fitting on piles, tie it by rods to a block in sound "
+               "ground, or replace this soil";
+    case KENT_FILL:
+        return "dig it out down to natural ground and replace it, from the pit to "
+               "where "
+               "the wedge before the face ends, by fill compacted in layers with its "
+               "density proved (90 to 95 % of Proctor's is commonly asked), or support "
+               "the fitting on piles, or tie it by rods to a block in sound ground";
+    case KENT_ORGANIC:
+        return "replace it through its whole depth, or support the fitting on piles "
+               "that reach firm ground, and tie it to them by rods";
+    case KENT_EXPANSIVE:
+        return "replace it by ground that does not swell to below the depth that dries "
+               "and wets, with drainage that keeps water away, or support the fitting "
+               "on piles from below that depth";
+    case KENT_LIQUEFIABLE:
+        return "have it densified or drained and its density proved, or support the "
+               "fitting on piles that reach below it and are designed for its loss";
+    case KENT_COLLAPSIBLE:
+        return "have it compacted or wetted beforehand under control with proof, or "
+               "replaced, and drained so that no leak reaches it, or support the "
+               "fitting on piles below it";
+    }
+    return "";
+}
+
+static void refuse_soil(const kent_holding_work *w, kent_text *t)
+{
+    const kent_nature nature = w->soil->nature;
+
+    kent_text_add(t, "the soil here, '%s',%s gives no restraint: ", w->soil->id,
+                  nature_says(nature));
+    if (sound_ground(w, t)) kent_text_add(t, " by restrained joints, or ");
+    kent_text_add(t, "%s", nature_way_out(nature));
+}
+
+/* No published reduction tells what a soil bears before ground that falls so. */
+static void refuse_falling(const kent_holding_work *w, const kent_soil *s, kent_text *t)
+{
+    kent_text_add(t,
+                  "no block: the ground before its face falls by %s along the thrust",
+                  kent_said_of(KENT_ANGLE, w->m->units, w->site.falls).s);
+    if (isnan(s->friction_angle)) {
+        kent_text_add(t,
+                      ", and soil '%s' states no friction_angle, which tells what that "
+                      "leaves of its bearing; give it, level the ground, or ",
+                      s->id);
+        return;
+    }
+    kent_text_add(t,
+                  ", as much as the %s at which soil '%s' stands by itself: nothing "
+                  "may lean on it; level the ground, tie the fitting back to ground "
+                  "uphill, or ",
+                  kent_said_of(KENT_ANGLE, w->m->units, s->friction_angle).s, s->id);
 }
 
 /* Why the soil's bearing is not known here, and what would tell it. */
 static void refuse_bearing(const kent_holding_work *w, kent_text *t)
 {
-    const kent_soil *s = w->soil;
+    const kent_soil *s = w->site.leans;
     const kent_system units = w->m->units;
     const double axis = kent_site_axis(&w->site);
 
@@ -128,7 +208,28 @@ static void refuse_bearing(const kent_holding_work *w, kent_text *t)
                       "friction_angle and cohesion; give all three, or ",
                       s->id);
         return;
+    case KENT_BEARING_FALLS:
+        refuse_falling(w, s, t);
+        return;
     }
+}
+
+/* Fill before the face, of which nobody says what it is, or which bears nothing. */
+static void refuse_fill(const kent_holding_work *w, kent_text *t)
+{
+    const int fill = w->fitting->backfill;
+
+    if (fill < 0) {
+        kent_text_add(t, "no block: its face stands against fill, and which soil that "
+                         "is is not stated; give ground.backfill, carry the face to "
+                         "undisturbed ground, or ");
+        return;
+    }
+    kent_text_add(t,
+                  "no block: its face stands against fill of soil '%s', which gives no "
+                  "restraint; compact it in layers with its density proved and state "
+                  "what it then bears, carry the face to undisturbed ground, or ",
+                  w->m->soils[fill].id);
 }
 
 static void refuse_obstacle(const kent_holding_work *w, kent_text *t)
@@ -168,11 +269,13 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          "cover where this stands");
         return;
     case KENT_FAULT_SHALLOW:
-        kent_text_add(t,
-                      "no block: a cover of %s is less than the least, %s; lay the "
-                      "main that deep, or ",
-                      kent_said_of(KENT_LENGTH, units, w->site.cover).s,
-                      kent_said_of(KENT_LENGTH, units, rules->least_cover).s);
+        kent_text_add(
+            t,
+            "no block: a cover of %s is less than the least, %s; lay the "
+            "main that deep, or ",
+            kent_said_of(KENT_LENGTH, units, w->site.cover).s,
+            kent_said_of(KENT_LENGTH, units, kent_rules_cover(rules, w->site.diameter))
+                .s);
         break;
     case KENT_FAULT_BEARING:
         refuse_bearing(w, t);
@@ -197,6 +300,22 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                       "be sized; better ground, a structure of its own, or ",
                       kent_said_of(KENT_VOLUME, units, rules->largest_volume).s);
         break;
+    case KENT_FAULT_SLOPE:
+        kent_text_add(
+            t,
+            "no block: the ground before its face falls by %s along the "
+            "thrust, and these rules allow %s; level it, tie the fitting back "
+            "to ground uphill, or ",
+            kent_said_of(KENT_ANGLE, units, w->site.falls).s,
+            kent_said_of(KENT_ANGLE, units, rules->steepest_ground).s);
+        break;
+    case KENT_FAULT_FILL:
+        refuse_fill(w, t);
+        break;
+    case KENT_FAULT_SHARE:
+        kent_text_add(t, "block and joints are asked for together, and not which part "
+                         "of the thrust the block is for; give block_share");
+        return;
     case KENT_FAULT_FACE:
         refuse_face(w, h, t);
         return;
@@ -212,6 +331,7 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
                            kent_notes *notes)
 {
     const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
+    const bool both = h->chosen == KENT_BLOCK_AND_JOINTS;
     kent_text t = {0};
 
     for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
@@ -221,9 +341,10 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
     if (t.length > 0) {
         kent_notes_add(notes, "no restrained length: soil '%s' lacks %s%s",
                        w->lacking->id, kent_text_of(&t),
-                       joints && !h->held ? "; give it in soils, or write restraint = "
-                                            "\"thrust-block\" in fittings"
-                                          : "");
+                       !joints || h->held    ? ""
+                       : w->blocks_forbidden ? "; give it in soils"
+                                             : "; give it in soils, or write restraint "
+                                               "= \"thrust-block\" in fittings");
     }
     if (w->lack & KENT_LACK_COVER) {
         kent_notes_add(notes, "no restrained length: the cover is not stated");
@@ -244,7 +365,7 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
         kent_notes_add(notes, "no restrained length: %s of the case%s",
                        w->fitting->point < 0 ? "this fitting stands in no pipe"
                                              : "the branch is no pipe",
-                       joints && !h->held
+                       joints && !h->held && !w->blocks_forbidden
                            ? "; write restraint = \"thrust-block\" in fittings"
                            : "");
     }
@@ -259,7 +380,7 @@ static void refuse_lengths(const kent_holding_work *w, const kent_holding *h,
         kent_notes_add(notes, "no restrained length: it runs into ground that gives no "
                               "restraint, to the end of the pipe");
     }
-    if ((w->lack & KENT_LACK_OLD_MAIN) && (!h->held || joints)) {
+    if ((w->lack & KENT_LACK_OLD_MAIN) && (!h->held || joints || both)) {
         kent_notes_add(
             notes, "restrained joints do not hold a tapping sleeve: the main that it "
                    "sits on lay there before, and its joints slip; use a thrust "
@@ -346,6 +467,7 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
         return;
     }
     const bool joints = h->chosen == KENT_RESTRAINED_JOINTS;
+    const bool both = h->chosen == KENT_BLOCK_AND_JOINTS;
     const bool soft = w->soil && !kent_soil_counts(w->soil);
     kent_text t = {0};
 
@@ -359,8 +481,10 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
     } else if (joints && !h->held && h->leg_count == 0 && w->lack == 0) {
         kent_text_add(&t,
                       "no leg of this fitting has joints that could be restrained "
-                      "against this push: write restraint = \"thrust-block\" for it "
-                      "in fittings");
+                      "against this push%s",
+                      w->blocks_forbidden
+                          ? ", and the rules forbid a block: hold it by a structure"
+                          : ": write restraint = \"thrust-block\" for it in fittings");
     } else if (!joints) {
         refuse_block(w, h, &t);
     }
@@ -368,8 +492,8 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
     h->cautions.failed = h->cautions.failed || t.failed;
     kent_text_clear(&t);
 
-    refuse_lengths(w, h, joints || !h->held ? &h->cautions : &h->remarks);
-    for (size_t i = 0; i < w->met.count && (joints || !h->held); i++) {
+    refuse_lengths(w, h, joints || both || !h->held ? &h->cautions : &h->remarks);
+    for (size_t i = 0; i < w->met.count && (joints || both || !h->held); i++) {
         kent_notes_add(&h->cautions, "%s", w->met.text[i]);
     }
 }

@@ -47,6 +47,8 @@ static void holding_start(kent_holding *h, const kent_fitting *f)
         .by_sense = {-1, -1, -1, -1},
         .chosen = f->restraint,
         .soil_beside = f->type == KENT_CURVE && f->restraint == KENT_NO_RESTRAINT,
+        .block_share = NAN,
+        .joints_share = NAN,
         .design_thrust = NAN,
         .factor_asked = NAN,
         .block = kent_block_none(),
@@ -61,6 +63,7 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
                                     kent_error *err)
 {
     kent_holding_find(w, h);
+    kent_holding_site(w, h);
     w->couple = kent_couple_find(w->m, w->fitting, w->loads);
     w->alone = kent_couple_alone(w->m, w->fitting, w->loads);
     h->unbalanced = w->couple.apart || w->alone > SAME * w->factored[KENT_RESULTANT];
@@ -68,7 +71,9 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         h->needs_nothing = false;
         kent_holding_refuse(w, h);
     } else if (!h->needs_nothing) {
+        kent_holding_policy(w, h);
         kent_holding_size(w, h);
+        kent_holding_routes(w, h);
         kent_holding_legs(w, h);
         kent_holding_refuse(w, h);
     }
@@ -114,7 +119,6 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             .site = site_of(&fitting, soil, &m->rules),
         };
         holding_start(h, &fitting);
-        if (kent_soil_counts(soil)) h->allowable_bearing = work.site.allowable;
         status = holding_work_out(&work, h, err);
         if (status != KENT_OK) {
             r->fitting_count++; /* this one holds notes too */

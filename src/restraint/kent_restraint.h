@@ -9,10 +9,11 @@
 #include "kent_bearing.h"
 #include "kent_derivation.h"
 #include "kent_loads.h"
-#include "kent_system.h"
 #include "kent_other_way.h"
+#include "kent_route.h"
 #include "kent_stability.h"
 #include "kent_straps.h"
+#include "kent_system.h"
 
 /* ---- plain functions ------------------------------------------------------------- */
 
@@ -128,10 +129,12 @@ typedef struct kent_holding {
     kent_sense sense; /* sideways, upward or downward: whichever uses most; the whole
                          (KENT_RESULTANT) where restrained joints are chosen */
     int runner_up;    /* the next case; -1 */
-    double runner_up_load;     /* N, its factored load in the same sense and way */
-    double runner_up_margin;   /* what governs over it, less 1; NAN: no next one */
-    int by_sense[KENT_SENSES]; /* governing case of each sense; -1 */
-    kent_restraint_choice chosen;
+    double runner_up_load;        /* N, its factored load in the same sense and way */
+    double runner_up_margin;      /* what governs over it, less 1; NAN: no next one */
+    int by_sense[KENT_SENSES];    /* governing case of each sense; -1 */
+    kent_restraint_choice chosen; /* by the case, or in its place by the rules */
+    double block_share, joints_share; /* of the thrust that block and joints are for,
+                                         where both hold it; NAN */
     bool held;          /* false: nothing here can hold it, or nothing was asked */
     bool soil_beside;   /* a curve, left to the soil beside it, all along */
     bool needs_nothing; /* within joint deflection, or no thrust */
@@ -146,6 +149,7 @@ typedef struct kent_holding {
     kent_straps straps;       /* of a block that holds something down */
     kent_stability stability; /* of the block; nothing judged without one */
     double allowable_bearing; /* Pa, of a face at this depth; NAN: none, or not known */
+    kent_bearing_view bearing; /* by every way that the soil states */
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */

@@ -11,7 +11,7 @@ static const double PCF = 157.08746384625278;                /* N/m3 */
 
 static kent_bearing_place dry(double depth)
 {
-    return (kent_bearing_place){depth, (double)INFINITY, 9.81e3};
+    return (kent_bearing_place){depth, (double)INFINITY, 9.81e3, 0.0, 0.0};
 }
 
 static double bearing_at(const kent_soil *soil, const kent_bearing_place *at)
@@ -145,10 +145,10 @@ static void under_water_only_the_buoyant_weight_presses(void **state)
     (void)state;
     const kent_soil upper = passive_soil(15.72e3, 30.0, 0.0, 1.0);
     const kent_soil lower = passive_soil(18.86e3, 26.0, 10e3, 1.0);
-    const kent_bearing_place top = {2.0, 2.0, 9.81e3};
+    const kent_bearing_place top = {2.0, 2.0, 9.81e3, 0.0, 0.0};
     const double depth = 31.44 / (18.86 - 9.81);
-    const kent_bearing_place boundary = {depth, 0.0, 9.81e3};
-    const kent_bearing_place base = {depth + 1.0, 0.0, 9.81e3};
+    const kent_bearing_place boundary = {depth, 0.0, 9.81e3, 0.0, 0.0};
+    const kent_bearing_place base = {depth + 1.0, 0.0, 9.81e3, 0.0, 0.0};
 
     assert_close(kent_effective_stress(15.72e3, &top), 31.44e3, 1e-12);
     assert_close(bearing_at(&upper, &top), 94.32e3, 1e-4);
@@ -162,7 +162,7 @@ static void water_counts_from_its_table_down(void **state)
     (void)state;
     for (int i = 0; i <= 20; i++) {
         const double table = 0.2 * i; /* m; the face at 2 m */
-        const kent_bearing_place at = {2.0, table, 9.81e3};
+        const kent_bearing_place at = {2.0, table, 9.81e3, 0.0, 0.0};
         const double under = table < 2.0 ? 2.0 - table : 0.0;
         assert_close(kent_effective_stress(19e3, &at), 38e3 - 9.81e3 * under, 1e-12);
     }
@@ -232,7 +232,7 @@ static void what_passive_pressure_gives_implies_its_own_coefficient(void **state
     for (size_t i = 0; i < sizeof table / sizeof table[0]; i++) {
         for (int c = 0; c <= 20; c += 10) {
             const kent_soil s = passive_soil(19e3, table[i][0], 1e3 * c, 1.0);
-            const kent_bearing_place at = {1.8, 1.0, 9.81e3};
+            const kent_bearing_place at = {1.8, 1.0, 9.81e3, 0.0, 0.0};
             kent_bearing_claim claim;
             assert_true(kent_bearing_claims(&s, &at, &claim));
             assert_within(claim.passive, table[i][1], 1e-4);
