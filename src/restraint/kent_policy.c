@@ -49,31 +49,37 @@ static void policy_both(const kent_holding_work *w, kent_holding *h)
     h->joints_share = 1.0;
 }
 
-static void policy_apply(kent_holding_work *w, kent_holding *h)
+/* Whether a policy forbids a block here. */
+static bool policy_forbids(const kent_holding_work *w, kent_block_policy policy)
 {
-    const kent_rules *rules = &w->m->rules;
-    const bool lifts = w->demand.load[KENT_UPWARD] > 0.0;
-    const bool any = rules->blocks != KENT_BLOCKS_ALLOWED;
-
-    if (!any && !lifts) return;
-    switch (any ? rules->blocks : rules->vertical_blocks) {
+    switch (policy) {
     case KENT_BLOCKS_ALLOWED:
+    case KENT_BLOCKS_WITH_JOINTS:
         break;
     case KENT_BLOCKS_FORBIDDEN:
-        policy_switch(w, h,
-                      any ? "let no block be built"
-                          : "let no block be built against an upward thrust");
-        return;
+        return true;
     case KENT_BLOCKS_ON_OLD_MAINS:
-        if (w->fitting->role == KENT_ROLE_TAPPING) break;
-        policy_switch(w, h, "let blocks be built on mains that lay before only");
-        return;
-    case KENT_BLOCKS_WITH_JOINTS:
-        policy_both(w, h);
-        return;
+        return w->fitting->role != KENT_ROLE_TAPPING;
     }
-    if (any && lifts && rules->vertical_blocks == KENT_BLOCKS_FORBIDDEN) {
+    return false;
+}
+
+static void policy_apply(kent_holding_work *w, kent_holding *h)
+{
+    const kent_block_policy any = w->m->rules.blocks;
+    const kent_block_policy upward = w->demand.load[KENT_UPWARD] > 0.0
+                                         ? w->m->rules.vertical_blocks
+                                         : KENT_BLOCKS_ALLOWED;
+
+    if (policy_forbids(w, any)) {
+        policy_switch(w, h,
+                      any == KENT_BLOCKS_ON_OLD_MAINS
+                          ? "let blocks be built on mains that lay before only"
+                          : "let no block be built");
+    } else if (policy_forbids(w, upward)) {
         policy_switch(w, h, "let no block be built against an upward thrust");
+    } else if (any == KENT_BLOCKS_WITH_JOINTS || upward == KENT_BLOCKS_WITH_JOINTS) {
+        policy_both(w, h);
     }
 }
 
