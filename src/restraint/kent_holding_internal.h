@@ -70,6 +70,8 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side
 /* One leg of the fitting in whole pipes; what it meets goes to w's met. */
 kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work);
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */
+/* The wedge of ground before a block's face. */
+kent_wedge kent_wedge_before(const kent_holding_work *w, const kent_block *b);
 /* Whether nothing stands in the ground that h's face leans on; else sets obstacle. Says
  * by how much the others are clear. */
 bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h);

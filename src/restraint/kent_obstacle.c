@@ -3,7 +3,7 @@
 #include "kent_said.h"
 #include "kent_wedge.h"
 
-static kent_wedge wedge_of(const kent_holding_work *w, const kent_block *b)
+kent_wedge kent_wedge_before(const kent_holding_work *w, const kent_block *b)
 {
     const double phi = w->soil->friction_angle;
     return (kent_wedge){
@@ -40,7 +40,7 @@ static lying lying_of(const kent_holding_work *w, const kent_holding *h,
 
 bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
 {
-    const kent_wedge wedge = wedge_of(w, &h->block);
+    const kent_wedge wedge = kent_wedge_before(w, &h->block);
     const size_t first = w->fitting->obstacle_first;
 
     if (!(w->demand.load[KENT_SIDEWAYS] > 0.0)) return true;

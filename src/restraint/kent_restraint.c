@@ -1,5 +1,6 @@
 #include "kent_restraint.h"
 #include "kent_holding_internal.h"
+#include "kent_space_internal.h"
 
 #include <assert.h>
 #include <stdlib.h>
@@ -75,6 +76,7 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_size(w, h);
         kent_holding_routes(w, h);
         kent_holding_legs(w, h);
+        kent_holding_footprint(w, h);
         kent_holding_refuse(w, h);
     }
     kent_holding_caution(w, h);
@@ -130,6 +132,8 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             r->not_held++;
         }
     }
+    status = kent_space_find(m, r, err);
+    if (status != KENT_OK) goto done;
     *out = r;
     r = NULL; /* handed over */
 done:
@@ -146,6 +150,7 @@ void kent_restraints_free(kent_restraints *r)
         kent_notes_clear(&r->fittings[i].remarks);
         kent_derivation_clear(&r->fittings[i].derivation);
     }
+    kent_space_clear(&r->space);
     free(r->fittings);
     free(r);
 }

@@ -11,6 +11,7 @@
 #include "kent_loads.h"
 #include "kent_other_way.h"
 #include "kent_route.h"
+#include "kent_space.h"
 #include "kent_stability.h"
 #include "kent_straps.h"
 #include "kent_system.h"
@@ -153,6 +154,7 @@ typedef struct kent_holding {
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */
+    kent_footprint footprint; /* what it takes up of the ground */
     kent_notes cautions;      /* of this fitting; says what would help where not held */
     kent_notes remarks;       /* why no length stands beside what holds it: for its hand
                                  calculation alone */
@@ -162,8 +164,9 @@ typedef struct kent_holding {
 typedef struct kent_restraints {
     kent_holding *fittings; /* [fitting_count] */
     size_t fitting_count;
-    double concrete; /* m3 in all, faces of their own included */
-    size_t not_held; /* of those that should be: not where none was asked or needed */
+    double concrete;  /* m3 in all, faces of their own included */
+    size_t not_held;  /* of those that should be: not where none was asked or needed */
+    kent_space space; /* who is near whom */
     kent_systems systems; /* of fittings held by restrained joints */
 } kent_restraints;
 

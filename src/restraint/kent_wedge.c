@@ -9,11 +9,16 @@ double kent_wedge_reach(const kent_wedge *wedge)
     return wedge->base * tan(QUARTER + 0.5 * wedge->friction_angle);
 }
 
+double kent_wedge_half_width(const kent_wedge *wedge, double before)
+{
+    const double spread = tan(QUARTER - 0.5 * wedge->friction_angle);
+    return wedge->half_width + before * spread;
+}
+
 double kent_wedge_clearance(const kent_wedge *wedge, double along, double across)
 {
     const double beyond = along - wedge->front;
-    const double spread = tan(QUARTER - 0.5 * wedge->friction_angle);
-    const double half = wedge->half_width + fmax(0.0, beyond) * spread;
+    const double half = kent_wedge_half_width(wedge, fmax(0.0, beyond));
     const double ahead = beyond - kent_wedge_reach(wedge);
     const double beside = fabs(across) - half;
 
@@ -24,10 +29,9 @@ double kent_wedge_clearance(const kent_wedge *wedge, double along, double across
 double kent_wedge_farthest(const kent_wedge *wedge, double along, double across)
 {
     const double reach = kent_wedge_reach(wedge);
-    const double spread = tan(QUARTER - 0.5 * wedge->friction_angle);
     const double near = wedge->front * along + wedge->half_width * fabs(across);
     const double far = (wedge->front + reach) * along +
-                       (wedge->half_width + reach * spread) * fabs(across);
+                       kent_wedge_half_width(wedge, reach) * fabs(across);
 
     return fmax(near, far);
 }

@@ -16,6 +16,10 @@ typedef struct kent_wedge {
 /* m from the face to where the wedge meets the ground's surface. source 10.25 */
 double kent_wedge_reach(const kent_wedge *wedge);
 
+/* m to either side of the thrust's line, at a level distance before the face (m, >= 0).
+ * source 10.26 */
+double kent_wedge_half_width(const kent_wedge *wedge, double before);
+
 /* m by which a place is clear of the wedge, whatever its depth; 0: inside, or between
  * fitting and face. along: m, level, from the fitting's centre in the direction of the
  * thrust; across: m to either side of it. fails never. source docs/theory/10-blocks.md,
