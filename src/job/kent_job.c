@@ -231,6 +231,7 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
         status = kent_recorder_finish(plan.recorder, &surge, &r->loads, err);
     }
     if (!status) status = kent_restraint_size(m, r->loads, &r->restraints, err);
+    if (!status) copy_notes(&r->restraints->cautions, &r->cautions);
     if (!status) status = kent_limit_table_fill(r, err);
     if (!status) kent_limits_judge(r);
     if (!status && (r->cautions.failed || m->cautions.failed || m->assumed.failed)) {

@@ -49,6 +49,10 @@ void kent_list_append(kent_object *list, json_t *value);
 
 void kent_json_put_limits(kent_writer *w);
 
+/* Of a fitting; null without a block. Quantities also of all together. */
+json_t *kent_json_concrete(const kent_concrete_check *c);
+json_t *kent_json_quantities(const kent_quantities *q);
+
 /* Of one march, by its index into results' scenarios. */
 void kent_json_put_screening(kent_writer *w, size_t march);
 void kent_json_put_swings(kent_writer *w, size_t march);

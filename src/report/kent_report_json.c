@@ -484,6 +484,8 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object_set(&o, "held", json_boolean(h->held));
     kent_object_set(&o, "needs_nothing", json_boolean(h->needs_nothing));
     kent_object_set(&o, "block", block_of(h));
+    kent_object_set(&o, "concrete", kent_json_concrete(&h->concrete));
+    kent_object_set(&o, "quantities", kent_json_quantities(&h->quantities));
     kent_object_set(&o, "ports", ports_of(m, f, loads, h));
     kent_object_set(&o, "restrained_length_m", kent_json_real(h->restrained_length));
     kent_object_set(&o, "restrained", legs_of(m, f, h));
@@ -527,6 +529,8 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     kent_json_put(&w, test_of(r));
     kent_json_put_text(&w, ",\n\"concrete_m3\": ");
     kent_json_put(&w, kent_json_real(r->restraints->concrete));
+    kent_json_put_text(&w, ",\n\"quantities\": ");
+    kent_json_put(&w, kent_json_quantities(&r->restraints->quantities));
     kent_json_put_text(&w, ",\n\"not_held\": ");
     kent_json_put(&w, kent_json_count(r->restraints->not_held));
     kent_json_put_limits(&w);

@@ -39,7 +39,8 @@ kent_block kent_block_none(void)
 double kent_block_thickness(const kent_rules *rules, kent_face face, double diameter)
 {
     const double spread = 0.5 * (fmax(face.width, face.height) - diameter);
-    return kent_side_up(fmax(rules->least_thickness, spread), rules->side_step);
+    const double least = fmax(rules->least_thickness, rules->concrete_behind);
+    return kent_side_up(fmax(least, spread), rules->side_step);
 }
 
 /* source docs/theory/10-blocks.md, 10.13 */
@@ -64,7 +65,7 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
     if (!kent_face_choose(rules, out->bearing_area + site->hole, limit, &out->face)) {
         return KENT_FAULT_FACE;
     }
-    out->face_thickness = kent_block_thickness(rules, out->face, site->diameter);
+    out->face_thickness = kent_site_thickness(rules, site, out->face, KENT_SIDEWAYS);
     return KENT_FAULT_NONE;
 }
 
@@ -163,7 +164,7 @@ static void base_size(const kent_rules *rules, const kent_site *site,
     out->width = kent_side_up(fmax(sqrt(area), site->diameter), step);
     out->height = kent_side_up(fmax(area / out->width, site->diameter), step);
     const kent_face plan = {.width = out->width, .height = out->height};
-    out->thickness = kent_block_thickness(rules, plan, site->diameter);
+    out->thickness = kent_site_thickness(rules, site, plan, KENT_DOWNWARD);
     if (demand->load[KENT_UPWARD] > 0.0) {
         const double dry = rules->concrete_unit_weight;
         const double lift = demand->load[KENT_UPWARD] / (out->width * out->height);

@@ -1,5 +1,5 @@
 /* The block's part of a hand calculation: depths, areas, sides, what is reached. */
-#include "kent_holding_internal.h"
+#include "kent_concrete_internal.h"
 #include "kent_side_internal.h"
 #include "kent_wedge.h"
 
@@ -88,11 +88,10 @@ static void derive_sides(const kent_holding_work *w, kent_holding *h)
                          "rx*h", "10.6", "width, at most");
     kent_derivation_work(d, "base", axis + 0.5 * face->height, KENT_LENGTH,
                          "axis + h/2", "10.2", "depth of the face's base");
-    rule(d, "tmin", r->least_thickness, KENT_LENGTH, "least thickness");
-    const double t = kent_block_thickness(r, *face, w->site.diameter);
-    kent_derivation_work(d, "t", t, KENT_LENGTH, UP("max(tmin, (max(w, h) - OD)/2)"),
-                         "10.7",
-                         "thickness: spread from pipe to face within 45 degrees");
+    const double t = h->block.has_face ? h->block.face_thickness : h->block.thickness;
+    kent_concrete_derive_thickness(
+        w, d, *face, t, "max(w, h)",
+        "thickness: spread from pipe to face within 45 degrees");
     kent_derivation_work(d, "V", face->width * face->height * t, KENT_VOLUME, "w*h*t",
                          "10.8", "concrete");
 }
@@ -254,12 +253,11 @@ static void derive_base(const kent_holding_work *w, kent_holding *h)
                          "10.17", "along the pipe");
     kent_derivation_work(d, "b2", b->height, KENT_LENGTH, UP("max(A0/b1, OD)"), "10.17",
                          "across");
-    rule(d, "tmin", r->least_thickness, KENT_LENGTH, "least thickness");
     const kent_face plan = {.width = b->width, .height = b->height};
-    const double spread = kent_block_thickness(r, plan, w->site.diameter);
-    kent_derivation_work(d, "t", spread, KENT_LENGTH,
-                         UP("max(tmin, (max(b1, b2) - OD)/2)"), "10.7",
-                         "thickness: spread from pipe to base within 45 degrees");
+    const double deep = kent_site_thickness(r, &w->site, plan, KENT_DOWNWARD);
+    kent_concrete_derive_thickness(
+        w, d, plan, deep, "max(b1, b2)",
+        "thickness: spread from pipe to base within 45 degrees");
     if (lifted) {
         const bool wet = derive_concrete(w, h);
         kent_derivation_work(d, "tw", b->thickness, KENT_LENGTH,

@@ -8,6 +8,14 @@
  * and the block's own weight. */
 #define KENT_BLOCK_NEGLIGIBLE 0.02
 
+/* What the concrete of a block is made for. */
+typedef struct kent_poured {
+    double strength;          /* Pa, stated or assumed */
+    kent_face contact;        /* what the fitting presses on; NAN: not known */
+    double load[KENT_SENSES]; /* N, design loads of the code; 0: negligible */
+    double test[KENT_SENSES]; /* the same of the site test, or without one of all */
+} kent_poured;
+
 typedef struct kent_site {  /* what a block stands in; m, Pa */
     double diameter;        /* outside, of the largest pipe */
     double cover;           /* ground to crown; NAN: not stated */
@@ -20,6 +28,7 @@ typedef struct kent_site {  /* what a block stands in; m, Pa */
     const kent_soil *fill;  /* between face and ground; NULL: the face meets ground */
     const kent_soil *leans; /* whichever of them is weaker: what allowable is of */
     kent_bearing_gap gap;
+    kent_poured concrete;
 } kent_site;
 
 /* Factored loads by sense, N; parts that are negligible are 0. */
@@ -34,6 +43,7 @@ typedef enum kent_fault {
     KENT_FAULT_BEARING,  /* the soil's bearing is not known at this depth */
     KENT_FAULT_FACE,     /* no face of the asked area at this depth */
     KENT_FAULT_OBSTACLE, /* something stands in the ground that the face leans on */
+    KENT_FAULT_CONCRETE, /* the fitting would crush it on the contact that is stated */
     KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
     KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
     KENT_FAULT_SOIL_UNSTATED,
@@ -59,6 +69,11 @@ void kent_site_bear(kent_site *site, const kent_rules *rules);
 /* N/m3 of concrete whose base lies at depth (m): buoyed where any of it is under water.
  */
 double kent_site_concrete(const kent_site *site, const kent_rules *rules, double depth);
+
+/* m: thickness behind a face, or under a base, of that side: within 45 degrees, or as
+ * the rules let plain concrete bend and shear. source 10.7, 19.11 */
+double kent_site_thickness(const kent_rules *rules, const kent_site *site,
+                           kent_face side, kent_sense sense);
 
 /* m: height of a gravity block that would reach the ground's surface; NAN: no cover
  * stated. */

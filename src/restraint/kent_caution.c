@@ -1,4 +1,4 @@
-#include "kent_holding_internal.h"
+#include "kent_concrete_internal.h"
 #include "kent_said.h"
 
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
@@ -214,6 +214,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
         kent_notes_add(&h->cautions, "beyond %s the concrete itself must be designed",
                        kent_said_of(KENT_FORCE, units, large).s);
     }
+    kent_concrete_caution(w, h);
 }
 
 static void caution_joints(const kent_holding_work *w, kent_holding *h)

@@ -1,4 +1,4 @@
-#include "kent_holding_internal.h"
+#include "kent_concrete_internal.h"
 
 /* Loads nearer than this, relative, are a tie: the case listed first governs. */
 static const double TIE = 1e-12;
@@ -155,6 +155,9 @@ static void holding_block(kent_holding_work *w, kent_holding *h)
     }
     if (w->fault == KENT_FAULT_NONE && !kent_obstacle_clear(w, h)) {
         w->fault = KENT_FAULT_OBSTACLE;
+    }
+    if (w->fault == KENT_FAULT_NONE && !kent_concrete_bears(w, h)) {
+        w->fault = KENT_FAULT_CONCRETE;
     }
     if (w->fault == KENT_FAULT_NONE) {
         holding_reach(w, h);

@@ -1,5 +1,5 @@
 /* The hand calculation of one fitting, from its thrust to what holds it. */
-#include "kent_holding_internal.h"
+#include "kent_concrete_internal.h"
 
 #include <stdio.h>
 #include <string.h>
@@ -126,6 +126,7 @@ void kent_holding_derive(const kent_holding_work *w, kent_holding *h)
         if (counts && s != h->sense) derive_load(w, h, s);
     }
     kent_block_derive(w, h);
+    kent_concrete_derive(w, h);
     kent_curve_derive(w, h);
     for (size_t i = 0; i < h->leg_count; i++) {
         kent_leg_derive(w, h, &h->legs[i]);

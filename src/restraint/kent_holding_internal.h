@@ -34,6 +34,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     double pull_factor;
     bool blocks_forbidden;         /* by the rules: joints stand in for one */
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
+    bool tested;                   /* a site test is among its load cases */
     kent_couple couple;            /* nil but of a group */
     double alone;                  /* N, see kent_couple_alone */
     double side_load;              /* N/m, factored, of a curve; NAN */

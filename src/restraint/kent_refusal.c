@@ -251,6 +251,24 @@ static void refuse_obstacle(const kent_holding_work *w, kent_text *t)
     kent_text_add(t, "); move one of them, or ");
 }
 
+static void refuse_concrete(const kent_holding_work *w, const kent_holding *h,
+                            kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const kent_concrete_check *c = &h->concrete;
+
+    kent_text_add(
+        t,
+        "no block: the fitting would press on the %s of concrete stated as "
+        "contact_area with %s, and concrete of %s takes %s there; let it press "
+        "on %s, take stronger concrete, or ",
+        kent_said_of(KENT_AREA, units, c->contact.width * c->contact.height).s,
+        kent_said_of(KENT_STRENGTH, units, c->pressure).s,
+        kent_said_of(KENT_STRENGTH, units, c->strength).s,
+        kent_said_of(KENT_STRENGTH, units, c->allowed).s,
+        kent_said_of(KENT_AREA, units, c->contact_needed).s);
+}
+
 static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          kent_text *t)
 {
@@ -293,6 +311,9 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         break;
     case KENT_FAULT_OBSTACLE:
         refuse_obstacle(w, t);
+        break;
+    case KENT_FAULT_CONCRETE:
+        refuse_concrete(w, h, t);
         break;
     case KENT_FAULT_VOLUME:
         kent_text_add(t,

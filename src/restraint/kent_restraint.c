@@ -1,5 +1,5 @@
 #include "kent_restraint.h"
-#include "kent_holding_internal.h"
+#include "kent_concrete_internal.h"
 #include "kent_space_internal.h"
 
 #include <assert.h>
@@ -73,11 +73,13 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_refuse(w, h);
     } else if (!h->needs_nothing) {
         kent_holding_policy(w, h);
+        kent_concrete_prepare(w, h);
         kent_holding_size(w, h);
         kent_holding_routes(w, h);
         kent_holding_legs(w, h);
         kent_holding_footprint(w, h);
         kent_holding_refuse(w, h);
+        kent_concrete_finish(w, h);
     }
     kent_holding_caution(w, h);
     kent_holding_derive(w, h);
@@ -134,6 +136,10 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
     }
     status = kent_space_find(m, r, err);
     if (status != KENT_OK) goto done;
+    if (!kent_concrete_conclude(m, r)) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
     *out = r;
     r = NULL; /* handed over */
 done:
@@ -151,6 +157,7 @@ void kent_restraints_free(kent_restraints *r)
         kent_derivation_clear(&r->fittings[i].derivation);
     }
     kent_space_clear(&r->space);
+    kent_notes_clear(&r->cautions);
     free(r->fittings);
     free(r);
 }

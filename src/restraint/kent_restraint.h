@@ -7,6 +7,7 @@
 #define KENT_RESTRAINT_H
 
 #include "kent_bearing.h"
+#include "kent_concrete.h"
 #include "kent_derivation.h"
 #include "kent_loads.h"
 #include "kent_other_way.h"
@@ -14,6 +15,7 @@
 #include "kent_space.h"
 #include "kent_stability.h"
 #include "kent_straps.h"
+#include "kent_quantity.h"
 #include "kent_system.h"
 
 /* ---- plain functions ------------------------------------------------------------- */
@@ -25,10 +27,6 @@ double kent_rankine_active(double friction_angle);
 /* Passive pressure, Pa: Kp s + 2 c sqrt(Kp), s the effective vertical stress Pa. */
 double kent_passive_pressure(double friction_angle, double cohesion, double stress);
 
-typedef struct kent_face { /* of a bearing block */
-    double width, height;  /* m */
-} kent_face;
-
 /* Least width x height, sides multiples of rules->side_step, that gives area (m2) under
  * a height of at most `limit` (m) and the rules' width to height; ties to the taller.
  * Returns false where no face serves. */
@@ -38,8 +36,8 @@ bool kent_face_choose(const kent_rules *rules, double area, double limit,
 /* m: the greatest height of a face centred on a pipe whose axis lies at depth (m). */
 double kent_face_height_limit(const kent_rules *rules, double axis_depth);
 
-/* m: thickness of a bearing block: least allowed and spread within 45 degrees, rounded
- * up. */
+/* m: thickness of a bearing block: least allowed, also as concrete behind the fitting,
+ * and spread within 45 degrees, rounded up. */
 double kent_block_thickness(const kent_rules *rules, kent_face face, double diameter);
 
 /* m3 of a gravity block that weighs factor x upward (N). unit_weight N/m3, of concrete,
@@ -149,6 +147,8 @@ typedef struct kent_holding {
     kent_block block;
     kent_straps straps;       /* of a block that holds something down */
     kent_stability stability; /* of the block; nothing judged without one */
+    kent_concrete_check concrete;
+    kent_quantities quantities; /* nil without a block */
     double allowable_bearing; /* Pa, of a face at this depth; NAN: none, or not known */
     kent_bearing_view bearing; /* by every way that the soil states */
     kent_leg legs[KENT_PORTS];
@@ -164,10 +164,14 @@ typedef struct kent_holding {
 typedef struct kent_restraints {
     kent_holding *fittings; /* [fitting_count] */
     size_t fitting_count;
-    double concrete;  /* m3 in all, faces of their own included */
+    double concrete;            /* m3 in all, faces of their own included */
+    kent_quantities quantities; /* in all */
+    double age; /* s, of the concrete before a test: the greatest of all blocks; 0: no
+                   block; NAN: never strong enough */
     size_t not_held;  /* of those that should be: not where none was asked or needed */
     kent_space space; /* who is near whom */
     kent_systems systems; /* of fittings held by restrained joints */
+    kent_notes cautions;  /* of all the blocks together */
 } kent_restraints;
 
 kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,
