@@ -45,14 +45,15 @@ static const command_row COMMANDS[] = {
      KENT_EXPLAIN, GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
     {"cross-check", "one CASE", 1, 1, KENT_CROSS_CHECK,
      GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
+    {"standard-table", "one FILE", 1, 1, KENT_STANDARD_TABLE,
+     GAVE_UNITS | GAVE_THREADS | GAVE_FORMAT | GAVE_WIDE | GAVE_QUIET | GAVE_STRICT},
     {"catalogue", "a part and at most 8 words", 0, 1 + KENT_OPTIONS_WORDS,
      KENT_CATALOGUE_LIST, GAVE_UNITS | GAVE_WIDE | GAVE_QUIET},
 };
 enum { COMMAND_COUNT = sizeof COMMANDS / sizeof COMMANDS[0] };
 
-static const char *const LATER[] = {"as-built",    "standard-table", "draw",
-                                    "vary",        "find-limit",     "probability",
-                                    "from-survey", "serve"};
+static const char *const LATER[] = {"as-built",    "draw",        "vary", "find-limit",
+                                    "probability", "from-survey", "serve"};
 enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 
 static const char *const PARTS[] = {"pipes", "soils",     "valves",
@@ -65,6 +66,7 @@ static const char ARGUMENTS[] =
     "check --keys\n"
     "explain CASE [FITTING...]\n"
     "cross-check CASE\n"
+    "standard-table FILE\n"
     "catalogue [pipes|materials|valves|pumps|soils|rules [WORD...]]";
 
 static const char DOCUMENT[] =
@@ -79,6 +81,9 @@ static const char DOCUMENT[] =
     "explain    the numbers of every FITTING named, else of all, as a hand "
     "calculation\n"
     "cross-check  peaks by a second, independent method beside those of the run\n"
+    "standard-table  sizes x fittings x soils of FILE at one pressure, with all that "
+    "the "
+    "table stands on\n"
     "catalogue  what config/ offers, each row with its source; of one part the rows "
     "that "
     "have every WORD\n"
@@ -214,7 +219,7 @@ static const command_row *find_command(struct argp_state *state, const reading *
     } else {
         argp_error(state,
                    "'%s' is not a command; one of run, check, explain, "
-                   "cross-check, catalogue",
+                   "cross-check, standard-table, catalogue",
                    word);
     }
     return NULL; /* not reached: argp_error ends the program */
@@ -249,7 +254,7 @@ static void finish(struct argp_state *state, reading *r)
 {
     if (r->word_count == 0) {
         argp_error(state, "no command; one of run, check, explain, cross-check, "
-                          "catalogue");
+                          "standard-table, catalogue");
     }
     const command_row *c = find_command(state, r);
     if (!c) return;

@@ -209,11 +209,12 @@ static kent_status copy_files(const kent_tree *tree, kent_model *m)
     return KENT_OK;
 }
 
-static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
+static kent_status fill_all(kent_filling *f, const kent_twig *root, const char *path,
+                            kent_error *err)
 {
     const size_t before = f->reader.complaints->count;
     kent_reader *r = &f->reader;
-    kent_record_read(r, kent_tree_root(r->tree), "case", "", 0, &f->root);
+    kent_record_read(r, root, "case", "", 0, &f->root);
     r->system = kent_record_field(&f->root, "units")->index == 1 ? KENT_US : KENT_SI;
     r->station_style = r->system == KENT_US ? KENT_100FT_FT : KENT_KM_M;
     kent_fill_head(f, path);
@@ -245,6 +246,26 @@ static kent_status fill_all(kent_filling *f, const char *path, kent_error *err)
     return r->complaints->count > before ? KENT_E_INPUT : copy_files(r->tree, f->model);
 }
 
+kent_status kent_fill_case(kent_filling *f, const kent_twig *root, const char *path,
+                           kent_model **out, kent_error *err)
+{
+    f->model = kent_model_new();
+    kent_status status = f->model ? KENT_OK : kent_error_nomem(err);
+    if (!status) status = fill_all(f, root, path, err);
+    if (!status) status = kent_model_derive(f->model, f->reader.complaints);
+    if (status == KENT_E_NOMEM) (void)kent_error_nomem(err);
+    if (!status) {
+        *out = f->model;
+        f->model = NULL;
+    }
+    kent_rows_free(f->points_table);
+    kent_rows_free(f->pipes_table);
+    kent_model_free(f->model);
+    f->points_table = f->pipes_table = NULL;
+    f->model = NULL;
+    return status;
+}
+
 kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
                            const kent_system *shown, kent_model **out,
                            kent_complaints *complaints, kent_error *err)
@@ -258,28 +279,17 @@ kent_status kent_case_read(const char *path, const kent_catalogue *catalogue,
     f->catalogue = catalogue;
     f->shown = shown;
     f->reader.complaints = complaints;
-    f->model = kent_model_new();
-    if (!f->model) status = kent_error_nomem(err);
-    if (!status) status = kent_tree_read(path, &tree, complaints, err);
+    status = kent_tree_read(path, &tree, complaints, err);
     if (!status) status = kent_units_new(&f->reader.units, err);
     if (status) goto done;
     f->reader.tree = tree;
     kent_catalogue_shelve(catalogue, &f->reader);
-    status = fill_all(f, path, err);
-    if (!status) status = kent_model_derive(f->model, complaints);
-    if (status == KENT_E_NOMEM) (void)kent_error_nomem(err);
-    if (!status) {
-        *out = f->model;
-        f->model = NULL;
-    }
+    status = kent_fill_case(f, kent_tree_root(tree), path, out, err);
 done:
     kent_complaints_sort(complaints);
     if (f) {
         kent_reader_clear(&f->reader);
-        kent_rows_free(f->points_table);
-        kent_rows_free(f->pipes_table);
         kent_units_free(f->reader.units);
-        kent_model_free(f->model);
     }
     free(f);
     kent_tree_free(tree);

@@ -25,6 +25,12 @@ typedef struct kent_filling {
     bool knows_temperature;        /* of the water: the case gives it */
 } kent_filling;
 
+/* A whole case from its root, of the reader's tree or made up of its twigs. f: reader
+ * with its tree, units and shelves of the catalogue, catalogue and shown are set, all
+ * else is nil; nothing of its own is left in it. Fails as kent_case_read. */
+kent_status kent_fill_case(kent_filling *f, const kent_twig *root, const char *path,
+                           kent_model **out, kent_error *err);
+
 /* Reads the group under a key of a record; without one *out is empty. Returns whether
  * it was there. */
 bool kent_fill_group(kent_filling *f, const kent_record *parent, const char *key,

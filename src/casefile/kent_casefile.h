@@ -5,6 +5,7 @@
 #include "kent_case.h"
 #include "kent_catalogue.h"
 #include "kent_keys.h"
+#include "kent_standard.h"
 #include "kent_tree.h"
 
 #endif

@@ -597,7 +597,8 @@ static void make_label(kent_record *record, const char *group, const char *owner
     }
     char *out = record->label;
     const size_t size = sizeof record->label;
-    if (strcmp(group, "case") == 0 || strcmp(group, "catalogue") == 0) {
+    if (strcmp(group, "case") == 0 || strcmp(group, "catalogue") == 0 ||
+        strcmp(group, "standard_table") == 0) {
         out[0] = '\0';
     } else if (position > 0 && name) {
         (void)snprintf(out, size, "%.100s%s \"%.40s\": ", owner, kind, name);

@@ -6,6 +6,12 @@
 #include "kent_listing.h"
 #include "kent_table.h"
 
+/* Who judges, and what prevails: the end of every sheet. */
+#define KENT_PAGE_JUDGE                                                                \
+    "Figures for competent, licensed engineers to judge. Local codes, the utility's "  \
+    "standard and the manufacturer's instructions prevail over them. Confirm soil "    \
+    "values on site before anything is built."
+
 /* What the parts of one printed report share. */
 typedef struct kent_page {
     const kent_results *results;

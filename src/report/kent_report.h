@@ -6,6 +6,7 @@
 #include "kent_catalogue.h"
 #include "kent_crosscheck.h"
 #include "kent_job.h"
+#include "kent_standard_job.h"
 #include <stdio.h>
 
 typedef struct kent_sink {
@@ -73,6 +74,14 @@ kent_status kent_report_explain(const kent_results *r, int fitting,
  * ([scenario_count]) side by side. */
 kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinions,
                               const kent_report_options *o, kent_sink sink);
+
+/* `standard-table`: every assumption, then a table for each soil; a row per cell; or
+ * both as JSON. */
+kent_status kent_report_standard(const kent_standard_result *r,
+                                 const kent_report_options *o, kent_sink sink);
+kent_status kent_report_standard_csv(const kent_standard_result *r,
+                                     const kent_report_options *o, kent_sink sink);
+kent_status kent_report_standard_json(const kent_standard_result *r, kent_sink sink);
 
 /* Which rows of the catalogue: part is NULL for all or "pipes", "soils", "valves",
  * "rules", "materials", "pumps"; every word must occur, in any case of letters, in a

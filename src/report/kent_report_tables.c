@@ -536,12 +536,7 @@ static void print_end(kent_page *page)
     const kent_model *m = page->model;
     kent_text words = {0};
     kent_text_add(page->out, "\n");
-    kent_table_paragraph(
-        page->out, page->limit, "",
-        "Figures for competent, licensed engineers to judge. Local codes, the "
-        "utility's "
-        "standard and the manufacturer's instructions prevail over them. Confirm soil "
-        "values on site before anything is built.");
+    kent_table_paragraph(page->out, page->limit, "", KENT_PAGE_JUDGE);
     kent_text_add(&words, "kentledge %s", KENT_VERSION);
     if (m->file_count > 0) {
         kent_text_add(&words, " · %s · checksum %016llx", m->files[0], m->checksum);

@@ -50,6 +50,9 @@ const char *kent_view_point(const kent_model *m, int point);
 /* One device as the case has it: "air vessel VES1: 4.50 m3 of gas in 10.00 m3 ...". */
 void kent_view_add_device(const kent_view *v, const kent_device *d, kent_text *out);
 
+/* One soil's values and where they come from, a paragraph. */
+void kent_view_soil(const kent_view *v, const kent_soil *s);
+
 /* ---- the parts ------------------------------------------------------------------- */
 
 void kent_view_plan(const kent_view *v);   /* the main, point by point */

@@ -105,7 +105,7 @@ static void add_bearing(const kent_view *v, const kent_soil *s, kent_text *out)
     }
 }
 
-static void say_soil(const kent_view *v, const kent_soil *s)
+void kent_view_soil(const kent_view *v, const kent_soil *s)
 {
     kent_text words = {0};
     kent_shown a;
@@ -152,7 +152,7 @@ void kent_view_ground(const kent_view *v)
         say_zone(v, &m->ground_zones[i]);
     }
     for (size_t i = 0; i < m->soil_count; i++) {
-        say_soil(v, &m->soils[i]);
+        kent_view_soil(v, &m->soils[i]);
     }
 }
 

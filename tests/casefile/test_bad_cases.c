@@ -1,4 +1,5 @@
-/* cases/bad: each NAME.cfg is refused with exactly the messages of NAME.txt. With
+/* cases/bad: each NAME.cfg is refused with exactly the messages of NAME.txt, as a case,
+ * or where its name starts with "standard-" as a standard table. With
  * --print NAME.cfg ... the messages of those cases are printed instead. */
 #include "case_text.h"
 
@@ -11,8 +12,11 @@ static void messages_of(const kent_catalogue *catalogue, const char *name,
     kent_complaints complaints = {0};
     kent_error err = {0};
     kent_model *model = NULL;
+    kent_standard *table = NULL;
     const kent_status status =
-        kent_case_read(name, catalogue, NULL, &model, &complaints, &err);
+        strncmp(name, "standard-", strlen("standard-")) == 0
+            ? kent_standard_read(name, catalogue, NULL, &table, &complaints, &err)
+            : kent_case_read(name, catalogue, NULL, &model, &complaints, &err);
     if (status != KENT_E_INPUT) {
         kent_text_add(out, "%s: %s\n", name, kent_status_text(status));
     }
@@ -25,6 +29,7 @@ static void messages_of(const kent_catalogue *catalogue, const char *name,
         }
     }
     kent_model_free(model);
+    kent_standard_free(table);
 }
 
 static void read_whole(const char *path, char *out, size_t size)

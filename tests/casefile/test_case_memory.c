@@ -27,6 +27,25 @@ static int read_the_case(void *context)
     return -1;
 }
 
+static int read_the_standard_table(void *context)
+{
+    const reading *r = context;
+    kent_complaints complaints = {0};
+    kent_error err = {0};
+    kent_standard *t = NULL;
+    const kent_status status =
+        kent_standard_read(r->path, r->catalogue, NULL, &t, &complaints, &err);
+    if (status == KENT_OK) {
+        assert_non_null(t);
+        kent_standard_free(t);
+        return 0;
+    }
+    assert_int_equal(status, KENT_E_NOMEM);
+    assert_int_equal(err.status, KENT_E_NOMEM);
+    assert_null(t);
+    return -1;
+}
+
 static int read_the_catalogue(void *context)
 {
     kent_complaints complaints = {0};
@@ -87,6 +106,22 @@ static void each_refused_allocation_of_tables_is_out_of_memory(void **state)
     kent_catalogue_free(c);
 }
 
+static void each_refused_allocation_of_a_standard_table_is_out_of_memory(void **state)
+{
+    (void)state;
+    static const char TABLE[] =
+        "format = 1;\npressure = \"10 bar\"; cover = \"1 m\";\n"
+        "sizes = ( \"DI-EN545-C40-DN100\" );\n"
+        "fittings = ( \"dead-end\" );\n"
+        "soils = ( { id = \"bank\"; allowable_bearing = \"50 kPa\"; } );\n";
+    kent_catalogue *c = read_catalogue();
+    reading r = {.catalogue = c};
+    write_bytes(r.path, TABLE, strlen(TABLE));
+    assert_true(kent_allocations_needed(read_the_standard_table, &r) > 40);
+    (void)unlink(r.path);
+    kent_catalogue_free(c);
+}
+
 static void each_refused_allocation_of_the_catalogue_is_out_of_memory(void **state)
 {
     (void)state;
@@ -99,6 +134,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(each_refused_allocation_of_a_case_is_out_of_memory),
         cmocka_unit_test(each_refused_allocation_of_tables_is_out_of_memory),
+        cmocka_unit_test(each_refused_allocation_of_a_standard_table_is_out_of_memory),
         cmocka_unit_test(each_refused_allocation_of_the_catalogue_is_out_of_memory),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -4,7 +4,8 @@ or expected-NAME.csv where it is not called after its folder.
 A row of expected.csv is quantity,value,relative,absolute,source. quantity is a path into
 results.json in which elements of a list are named by their id, name, state or index:
 fittings.PI1.block.width_m, scenarios.shut.points.VC.highest_head_m,
-fittings.PI1.thrust_N.0. A value of the form "text:bend" compares words, "null" the absence
+fittings.PI1.thrust_N.0. Of a standard table, which lies in a folder of cases/standard, they are paths into
+what --format json prints: cells.SOIL/SIZE/FITTING.thrust_N. A value of the form "text:bend" compares words, "null" the absence
 of a value. Met inside either tolerance; NaN never is.
 """
 import csv
@@ -55,6 +56,19 @@ def fault(row, results):
                              f"({row['source']})")
 
 
+def results_of(program, case):
+    """The results as JSON gives them."""
+    with tempfile.TemporaryDirectory() as folder:
+        out = pathlib.Path(folder) / "results"
+        table = case.parent.parent.name == "standard"
+        words = (["standard-table", str(case), "--format", "json", "--quiet"] if table
+                 else ["run", str(case), "--out", str(out), "--quiet"])
+        run = subprocess.run([program, *words], capture_output=True, text=True)
+        if run.returncode != 0:
+            raise RuntimeError(f"exit status {run.returncode}\n{run.stderr}")
+        return json.loads(run.stdout if table else (out / "results.json").read_text())
+
+
 def main(program, case):
     case = pathlib.Path(case)
     own = case.stem == case.parent.name  # a second case of a folder has its own table
@@ -64,14 +78,11 @@ def main(program, case):
     if not rows:
         print(f"{table} is empty")
         return 1
-    with tempfile.TemporaryDirectory() as folder:
-        out = pathlib.Path(folder) / "results"
-        run = subprocess.run([program, "run", str(case), "--out", str(out), "--quiet"],
-                             capture_output=True, text=True)
-        if run.returncode != 0:
-            print(f"exit status {run.returncode}\n{run.stderr}")
-            return 1
-        results = json.loads((out / "results.json").read_text())
+    try:
+        results = results_of(program, case)
+    except RuntimeError as failed:
+        print(failed)
+        return 1
     faults = [f for f in (fault(row, results) for row in rows) if f]
     print("\n".join(faults) or f"{len(rows)} quantities as expected")
     return 1 if faults else 0

@@ -57,6 +57,8 @@ def read_sources(cases):
     """Sound cases and bad ones; of each its own bytes, and by name what stands beside it."""
     sound, bad = [(TABLE_CASE, TABLES)] * 8, []  # few others have tables
     for path in sorted(pathlib.Path(cases).rglob("*.cfg")):
+        if path.parent.parent.name == "standard":
+            continue  # no case
         beside = {p.name: p.read_bytes() for p in path.parent.iterdir()
                   if p.suffix in (".csv", ".inc") and p.name.encode() in path.read_bytes()}
         (bad if path.parent.name == "bad" else sound).append((path.read_bytes(), beside))
