@@ -53,6 +53,10 @@ void kent_json_put_limits(kent_writer *w);
 json_t *kent_json_concrete(const kent_concrete_check *c);
 json_t *kent_json_quantities(const kent_quantities *q);
 
+/* The restrained lengths of one fitting: a list, empty where none can be given. */
+json_t *kent_json_legs(const kent_model *m, const kent_fitting *f,
+                       const kent_holding *h);
+
 /* Of one march, by its index into results' scenarios. */
 void kent_json_put_screening(kent_writer *w, size_t march);
 void kent_json_put_swings(kent_writer *w, size_t march);

@@ -356,24 +356,6 @@ static json_t *ports_of(const kent_model *m, const kent_fitting *f,
     return kent_object_done(list);
 }
 
-static json_t *legs_of(const kent_model *m, const kent_fitting *f,
-                       const kent_holding *h)
-{
-    kent_object list = kent_list_new();
-    for (size_t i = 0; i < h->leg_count; i++) {
-        const kent_leg *leg = &h->legs[i];
-        const kent_port *port = &m->ports[f->port_first + leg->port];
-        kent_object o = kent_object_new();
-        kent_object_set(&o, "direction", kent_json_vector(port->direction));
-        kent_object_set(&o, "length_m", kent_json_real(leg->length));
-        kent_object_set(&o, "pipes",
-                        leg->pipes > 0 ? json_integer(leg->pipes) : json_null());
-        kent_object_set(&o, "fits", json_boolean(leg->fits));
-        kent_list_append(&list, kent_object_done(o));
-    }
-    return kent_object_done(list);
-}
-
 /* Of the governing case; of a case of no state in particular the only one there is. */
 static json_t *state_governing(const kent_results *r, size_t index,
                                const kent_load_case *c)
@@ -488,7 +470,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object_set(&o, "quantities", kent_json_quantities(&h->quantities));
     kent_object_set(&o, "ports", ports_of(m, f, loads, h));
     kent_object_set(&o, "restrained_length_m", kent_json_real(h->restrained_length));
-    kent_object_set(&o, "restrained", legs_of(m, f, h));
+    kent_object_set(&o, "restrained", kent_json_legs(m, f, h));
     kent_object_set(&o, "cautions", kent_json_notes(&h->cautions));
     return kent_object_done(o);
 }

@@ -225,7 +225,8 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
     const bool joints =
         h->chosen == KENT_RESTRAINED_JOINTS || h->chosen == KENT_BLOCK_AND_JOINTS;
     if (!joints || h->leg_count == 0) return;
-    if (branch) {
+    const double *run = w->fitting->stated.run_length;
+    if (branch && !(run[0] > 0.0) && !(run[1] > 0.0)) {
         kent_notes_add(&h->cautions,
                        "the restrained length of a branch takes no credit "
                        "for the run, whose restrained length is not given");

@@ -208,12 +208,12 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
 
 /* ---- restrained length ----------------------------------------------------------- */
 
-/* m restrained over m needed, of one leg; 1 where pipes have no known length. */
-static double leg_use(const kent_holding_work *w, const kent_leg *leg)
+/* m needed over m restrained, of one leg; 1 where it ends otherwise than in plain pipe,
+ * or is nil. */
+static double leg_use(const kent_leg *leg)
 {
-    const kent_port *p = &w->m->ports[w->fitting->port_first + leg->port];
-    const double laying = w->m->pipes[w->m->spans[p->span].pipe].laying_length;
-    return leg->pipes > 0 ? leg->length / (leg->pipes * laying) : 1.0;
+    const bool plain = leg->end == KENT_LEG_IN_GROUND && leg->length > 0.0;
+    return plain ? leg->length / leg->reach : 1.0;
 }
 
 /* Whether the legs hold the thrust, or the joints' part of it; *use: how much of what
@@ -228,7 +228,7 @@ static bool joints_hold(const kent_holding_work *w, const kent_holding *h,
     for (size_t i = 0; i < h->leg_count; i++) {
         if (!h->legs[i].fits) continue;
         fitting++;
-        *use = fmax(*use, leg_use(w, &h->legs[i]));
+        *use = fmax(*use, leg_use(&h->legs[i]));
     }
     return wanted > 0 && (either ? fitting > 0 : fitting == wanted);
 }
@@ -288,8 +288,8 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
 
     for (size_t k = rule->first; k < end; k++) {
         kent_leg_work work;
-        const unsigned lack =
-            kent_leg_prepare(w->m, w->fitting, k, w->pull, w->pull_factor, &work);
+        const unsigned lack = kent_leg_prepare(w->m, w->standings, w->index, k, w->pull,
+                                               w->pull_factor, &work);
         wanted++;
         w->lack |= lack;
         if (work.lacking) w->lacking = work.lacking;

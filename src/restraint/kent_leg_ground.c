@@ -1,30 +1,10 @@
 /* The ground along a leg, stretch by stretch, and where sound ground begins. */
 #include "kent_leg_internal.h"
-#include "kent_block_internal.h"
 
 #include <math.h>
 
-static const double PI = 3.14159265358979323846;
-
-/* m: places nearer than this along a pipe are one place. */
-static const double SAME_PLACE = 1e-6;
-
 /* Relative: a length that falling cover makes longer than this no more is found. */
 static const double NEAR_ENOUGH = 1e-9;
-
-double kent_port_chainage(const kent_model *m, const kent_port *port)
-{
-    const kent_span *span = &m->spans[port->span];
-    const size_t start = m->pipes[span->pipe].route_first;
-    return m->chainage[span->route_first] - m->chainage[start] + port->chainage;
-}
-
-static double pipe_length(const kent_model *m, int pipe)
-{
-    const kent_pipe *p = &m->pipes[pipe];
-    const size_t last = p->route_first + p->route_count - 1;
-    return m->chainage[last] - m->chainage[p->route_first];
-}
 
 /* ---- edges of zones -------------------------------------------------------------- */
 
@@ -46,7 +26,7 @@ static double chainage_of(const kent_model *m, int pipe, double station, double 
 /* The next `from` or `to` of any zone of the pipe, whatever lies beyond it. */
 static double any_edge(const kent_model *m, int pipe, double from, bool ahead)
 {
-    const double end = pipe_length(m, pipe);
+    const double end = kent_pipe_laid(m, pipe);
     const double here = kent_model_station_at(m, pipe, from);
     double nearest = INFINITY; /* m, of stations */
 
@@ -55,19 +35,19 @@ static double any_edge(const kent_model *m, int pipe, double from, bool ahead)
         const double edges[] = {zone->from, zone->to};
         for (size_t k = 0; k < 2; k++) {
             const double away = ahead ? edges[k] - here : here - edges[k];
-            if (away > SAME_PLACE) nearest = fmin(nearest, away);
+            if (away > KENT_SAME_PLACE) nearest = fmin(nearest, away);
         }
     }
     if (isinf(nearest)) return ahead ? INFINITY : -INFINITY;
     const double edge = ahead ? chainage_of(m, pipe, here + nearest, from, end)
                               : chainage_of(m, pipe, here - nearest, 0.0, from);
-    const bool inside = ahead ? edge < end - SAME_PLACE : edge > SAME_PLACE;
+    const bool inside = ahead ? edge < end - KENT_SAME_PLACE : edge > KENT_SAME_PLACE;
     return inside ? edge : ahead ? INFINITY : -INFINITY;
 }
 
 double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead)
 {
-    const double step = ahead ? SAME_PLACE : -SAME_PLACE;
+    const double step = ahead ? KENT_SAME_PLACE : -KENT_SAME_PLACE;
     const int zone = kent_model_ground_at(m, pipe, from + step).zone;
     double edge = from;
 
@@ -77,154 +57,29 @@ double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead)
     return edge;
 }
 
-/* ---- one piece ------------------------------------------------------------------- */
-
-/* N per m of empty pipe; NAN: not known. source 11.1 */
-static double pipe_weight(const kent_pipe *p, double gravity)
-{
-    const double mean = p->outside_diameter - p->wall;
-    if (!isnan(p->unit_mass)) return p->unit_mass * gravity;
-    return PI * mean * p->wall * p->material_density * gravity;
-}
-
-/* The soil's for this kind of trench, else its own for any. */
-static double passive_ratio(const kent_soil *s, int trench)
-{
-    const double own = trench >= 0 ? s->passive_by_trench[trench] : NAN;
-    return isnan(own) ? s->passive_ratio : own;
-}
-
-/* A ratio matters unless what it multiplies is stated to be nil. */
-static unsigned soil_lacks(const kent_soil *s, int trench, bool bears)
-{
-    unsigned lack = 0;
-
-    if (isnan(s->unit_weight)) lack |= KENT_LACK_UNIT_WEIGHT;
-    if (isnan(s->friction_angle)) lack |= KENT_LACK_FRICTION_ANGLE;
-    if (isnan(s->cohesion)) lack |= KENT_LACK_COHESION;
-    if (isnan(s->friction_ratio) && !(s->friction_angle <= 0.0)) {
-        lack |= KENT_LACK_FRICTION_RATIO;
-    }
-    if (isnan(s->adhesion_ratio) && !(s->cohesion <= 0.0)) {
-        lack |= KENT_LACK_ADHESION_RATIO;
-    }
-    if (isnan(passive_ratio(s, trench)) && bears) lack |= KENT_LACK_PASSIVE_RATIO;
-    return lack;
-}
-
-/* A value that does not matter may be missing: what it multiplies is nil. */
-static double known(double value) { return isnan(value) ? 0.0 : value; }
-
-static void piece_grip(const kent_model *m, const kent_ground_here *ground,
-                       const kent_leg_work *w, kent_leg_piece *out)
-{
-    const kent_pipe *p = w->pipe;
-    const kent_soil *s = out->soil;
-    const double od = p->outside_diameter, bore = p->inside_diameter;
-    const bool wet = ground->water_table < ground->cover + od;
-    const double water = wet ? m->rules.water_unit_weight : 0.0;
-
-    out->displaced = water * 0.25 * PI * od * od;
-    out->trench = (kent_trench){
-        .outside_diameter = od,
-        .cover = ground->cover,
-        .pipe_weight = w->pipe_weight - out->displaced,
-        .water_weight = m->water.density * m->gravity * 0.25 * PI * bore * bore,
-        .unit_weight = s->unit_weight - water,
-        .friction_angle = s->friction_angle,
-        .cohesion = s->cohesion,
-        .friction_ratio = known(s->friction_ratio),
-        .adhesion_ratio = known(s->adhesion_ratio),
-        .passive_ratio = known(passive_ratio(s, ground->trench)),
-    };
-    out->grip = kent_soil_grip_of(&out->trench);
-    out->friction =
-        w->sleeve * (w->bend ? out->grip.friction : out->grip.friction_whole);
-    out->bearing = w->bears ? out->grip.bearing : 0.0;
-    /* a pipe that floats has no friction, and certainly none the other way */
-    out->resistance = fmax(0.0, out->friction + 0.5 * out->bearing);
-}
-
-/* A piece in this ground, without its length. Returns what is missing. */
-static unsigned piece_fill(const kent_model *m, const kent_ground_here *ground,
-                           kent_leg_work *w, kent_leg_piece *out)
-{
-    unsigned lack = 0;
-
-    if (ground->soil < 0) return KENT_LACK_SOIL;
-    *out = (kent_leg_piece){
-        .soil = &m->soils[ground->soil],
-        .trench_kind = ground->trench,
-        .weakest = -1,
-        .trench.cover = ground->cover,
-    };
-    out->counts = kent_soil_counts(out->soil);
-    if (!out->counts) return 0;
-    lack = soil_lacks(out->soil, ground->trench, w->bears);
-    if (lack != 0) w->lacking = out->soil;
-    if (isnan(ground->cover)) lack |= KENT_LACK_COVER;
-    if (isnan(w->pipe_weight)) lack |= KENT_LACK_PIPE_MASS;
-    if (lack == 0) piece_grip(m, ground, w, out);
-    return lack;
-}
-
-/* Ground that holds less takes the piece's place. Returns what is missing. */
-static unsigned piece_weaken(const kent_model *m, const kent_ground_here *ground,
-                             int point, kent_leg_work *w, kent_leg_piece *piece)
-{
-    kent_leg_piece other = {0};
-    const unsigned lack = piece_fill(m, ground, w, &other);
-
-    if (lack != 0) return lack;
-    if (other.resistance < piece->resistance) {
-        *piece = other;
-        piece->weakest = point;
-    }
-    return 0;
-}
-
 /* ---- one part -------------------------------------------------------------------- */
 
-/* A part of a leg in one kind of ground: to the next edge of a zone, or to the end. */
+/* A part of a leg in one kind of ground: to the next edge of a zone, to the end of a
+ * pipe that another goes on from, or to the leg's end. */
 typedef struct leg_part {
-    int pipe;
-    bool ahead;
-    double from, reach;      /* m: chainage of the pipe; to the edge, INFINITY: none */
+    kent_along way;
+    double reach;            /* m, INFINITY: nothing changes */
+    kent_along next;         /* the way beyond that */
     kent_ground_here ground; /* where nothing else is said */
 } leg_part;
-
-static double part_place(const leg_part *part, double away)
-{
-    return part->ahead ? part->from + away : part->from - away;
-}
 
 /* The ground at a distance (m) into the part, where nothing of its own is said. What
  * nobody states there is as where the part begins. */
 static kent_ground_here part_ground(const kent_model *m, const leg_part *part,
                                     double away)
 {
-    kent_ground_here here = kent_model_ground_at(m, part->pipe, part_place(part, away));
+    kent_ground_here here =
+        kent_model_ground_at(m, part->way.pipe, kent_along_place(part->way, away));
     if (here.soil < 0) here.soil = part->ground.soil;
     if (here.trench < 0) here.trench = part->ground.trench;
     if (isnan(here.cover)) here.cover = part->ground.cover;
     if (isnan(here.water_table)) here.water_table = part->ground.water_table;
     return here;
-}
-
-size_t kent_stop_search(const kent_model *m, size_t first, size_t count,
-                        double chainage)
-{
-    size_t lo = first, hi = first + count;
-
-    while (lo < hi) {
-        const size_t mid = lo + (hi - lo) / 2;
-        if (m->chainage[mid] - m->chainage[first] < chainage) {
-            lo = mid + 1;
-        } else {
-            hi = mid;
-        }
-    }
-    return lo;
 }
 
 /* What a stop says of its own. Ground that can't be relied on is no part's: it breaks
@@ -240,48 +95,74 @@ static void ground_of_stop(const kent_model *m, int point, double outside,
     if (!isnan(p->water_table)) ground->water_table = p->water_table;
 }
 
+/* At a stop: what it says of its own, and the slope before and beyond it. */
+static unsigned stop_weaken(const kent_model *m, const leg_part *part, size_t stop,
+                            double away, kent_leg_work *w, kent_leg_piece *piece)
+{
+    const int point = m->route[stop];
+    kent_leg_place place = {part_ground(m, part, away), part->way.pipe, piece->rise};
+
+    ground_of_stop(m, point, m->pipes[part->way.pipe].outside_diameter, &place.ground);
+    unsigned lack = kent_piece_weaken(m, &place, point, w, piece);
+    for (int beyond = 0; beyond < 2 && lack == 0; beyond++) {
+        place.rise = kent_along_rise(m, part->way, away, beyond != 0);
+        lack = kent_piece_weaken(m, &place, piece->weakest, w, piece);
+    }
+    return lack;
+}
+
 /* Between two distances (m) into a part, its piece becomes as weak as its weakest stop,
- * and as the cover at the second. Returns what is missing. */
+ * and as the cover and slope at the second. Returns what is missing. */
 static unsigned part_weaken(const kent_model *m, const leg_part *part, double begin,
                             double end, kent_leg_work *w, kent_leg_piece *piece)
 {
-    const kent_pipe *pipe = &m->pipes[part->pipe];
+    const kent_pipe *pipe = &m->pipes[part->way.pipe];
     const double start = m->chainage[pipe->route_first];
-    const double a = part_place(part, begin), b = part_place(part, end);
+    const double a = kent_along_place(part->way, begin);
+    const double b = kent_along_place(part->way, end);
     const size_t stops = pipe->route_first + pipe->route_count;
-    kent_ground_here ground = part_ground(m, part, end - SAME_PLACE);
-    unsigned lack = piece_weaken(m, &ground, -1, w, piece);
+    const bool edge = part->next.pipe == part->way.pipe; /* else the pipe's end */
+    const double last = part->reach + (edge ? -KENT_SAME_PLACE : KENT_SAME_PLACE);
+    const kent_leg_place place = {part_ground(m, part, end - KENT_SAME_PLACE),
+                                  part->way.pipe,
+                                  kent_along_rise(m, part->way, end, false)};
+    unsigned lack = kent_piece_weaken(m, &place, -1, w, piece);
 
     for (size_t k =
              kent_stop_search(m, pipe->route_first, pipe->route_count, fmin(a, b));
          k < stops && lack == 0; k++) {
         const double there = m->chainage[k] - start;
-        const double away = fabs(there - part->from);
+        const double away = fabs(there - part->way.at);
         if (there > fmax(a, b)) break;
-        if (away <= SAME_PLACE || away >= part->reach - SAME_PLACE) continue;
-        ground = part_ground(m, part, away);
-        ground_of_stop(m, m->route[k], pipe->outside_diameter, &ground);
-        lack = piece_weaken(m, &ground, m->route[k], w, piece);
+        if (away <= KENT_SAME_PLACE || away >= last) continue;
+        lack = stop_weaken(m, part, k, away, w, piece);
     }
     return lack;
 }
 
-/* m: how much of a part is needed for what is left (N) of the demand, its piece being
- * no stronger than the weakest ground of that length. Returns what is missing. */
-static unsigned part_need(const kent_model *m, const leg_part *part, double left,
-                          kent_leg_work *w, kent_leg_piece *piece, double *needed)
+/* m that a demand (N) takes of a piece. */
+static double piece_need(const kent_leg_piece *piece, double left)
 {
-    const double length = pipe_length(m, part->pipe);
-    const double whole = part->ahead ? length - part->from : part->from;
-    const double most = fmin(part->reach, whole);
-    double need = left / piece->resistance; /* not finite: nothing holds */
+    if (left <= 0.0) return 0.0;
+    return piece->resistance > 0.0 ? left / piece->resistance : INFINITY;
+}
+
+/* m: how much of a part is needed for what is left (N) of the demand, its piece being
+ * no stronger than the weakest ground of that length, or of `room` m. Returns what is
+ * missing. */
+static unsigned part_need(const kent_model *m, const leg_part *part, double left,
+                          double room, kent_leg_work *w, kent_leg_piece *piece,
+                          double *needed)
+{
+    const double most = fmin(room, fmin(part->reach, kent_along_left(m, part->way)));
+    double need = piece_need(piece, left);
     double looked = 0.0;
 
     while (looked < most && need > looked * (1.0 + NEAR_ENOUGH)) {
         const double to = fmin(need, most);
         const unsigned lack = part_weaken(m, part, looked, to, w, piece);
         if (lack != 0) return lack;
-        need = left / piece->resistance;
+        need = piece_need(piece, left);
         looked = to;
     }
     *needed = need;
@@ -299,61 +180,97 @@ static bool leaves_other(const kent_model *m, const kent_fitting *fitting, int p
     return fitting->zone >= 0 && m->ground_zones[fitting->zone].pipe == pipe;
 }
 
-/* The part that begins at a chainage. */
-static leg_part part_from(const kent_model *m, int pipe, bool ahead, double from)
+/* The part that begins on a way. */
+static leg_part part_from(const kent_model *m, kent_along way)
 {
-    const double step = ahead ? SAME_PLACE : -SAME_PLACE;
-    const double edge = kent_zone_edge(m, pipe, from, ahead);
-
-    return (leg_part){
-        .pipe = pipe,
-        .ahead = ahead,
-        .from = from,
-        .reach = fabs(edge - from),
-        .ground = kent_model_ground_at(m, pipe, from + step),
+    const double step = way.ahead ? KENT_SAME_PLACE : -KENT_SAME_PLACE;
+    const double edge = kent_zone_edge(m, way.pipe, way.at, way.ahead);
+    leg_part part = {
+        .way = way,
+        .reach = fabs(edge - way.at),
+        .next = {way.pipe, way.ahead, edge},
+        .ground = kent_model_ground_at(m, way.pipe, way.at + step),
     };
+
+    if (isinf(edge) && kent_along_on(m, way, &part.next)) {
+        part.reach = kent_along_left(m, way);
+    }
+    return part;
+}
+
+/* The first part, in the ground of the fitting unless it leaves that at once. */
+static leg_part part_first(const kent_model *m, const kent_fitting *fitting,
+                           const kent_port *port, double *own)
+{
+    leg_part part = part_from(m, kent_along_of(m, port));
+
+    *own = 0.0;
+    if (leaves_other(m, fitting, part.way.pipe, &part.ground)) return part;
+    *own = part.reach;
+    part.ground.soil = fitting->soil;
+    part.ground.backfill = fitting->backfill;
+    part.ground.trench = fitting->trench;
+    part.ground.cover = fitting->cover;
+    part.ground.water_table = fitting->water_table;
+    return part;
+}
+
+/* The part beyond. Where only the pipe changes, the ground goes on. */
+static leg_part part_next(const kent_model *m, const leg_part *part, double *own,
+                          double length)
+{
+    const bool fits = *own >= length - KENT_SAME_PLACE; /* still in the fitting's */
+    const bool same = part->next.pipe == part->way.pipe;
+    leg_part next = part_from(m, part->next);
+
+    if (same || next.ground.zone >= 0 || part->ground.zone >= 0) return next;
+    next.ground = part->ground;
+    if (fits) *own = length + next.reach;
+    return next;
+}
+
+/* Whether nothing holds the pipe where a leg begins, whatever the soil. */
+static bool begins_free(const kent_model *m, const leg_part *part)
+{
+    return part->ground.casing || m->pipes[part->way.pipe].above_ground;
 }
 
 unsigned kent_leg_pieces(const kent_model *m, const kent_fitting *fitting,
                          const kent_port *port, kent_leg_work *w)
 {
     double left = w->demand, length = 0.0;
-    leg_part part = part_from(m, m->spans[port->span].pipe, port->sign > 0.0,
-                              kent_port_chainage(m, port));
+    leg_part part = part_first(m, fitting, port, &w->own);
 
-    w->pipe_weight = pipe_weight(w->pipe, m->gravity);
     w->sleeve = m->ground.wrapped ? m->rules.wrapped_ratio : 1.0;
-    if (fitting->soil < 0 || !kent_soil_counts(&m->soils[fitting->soil])) {
+    w->piece_count = 0;
+    w->gives = 0.0;
+    if (!begins_free(m, &part) &&
+        (fitting->soil < 0 || !kent_soil_counts(&m->soils[fitting->soil]))) {
         return KENT_LACK_SOIL;
     }
-    w->own = part.reach;
-    if (leaves_other(m, fitting, part.pipe, &part.ground)) {
-        w->own = 0.0;
-    } else {
-        part.ground.soil = fitting->soil;
-        part.ground.trench = fitting->trench;
-        part.ground.cover = fitting->cover;
-        part.ground.water_table = fitting->water_table;
-    }
     for (;;) {
+        const double room = w->limit - length;
+        const kent_leg_place place = {part.ground, part.way.pipe,
+                                      kent_along_rise(m, part.way, 0.0, true)};
         double needed = NAN;
         if (w->piece_count == KENT_LEG_PIECES) return KENT_LACK_PIECES;
         kent_leg_piece *piece = &w->piece[w->piece_count];
-        unsigned lack = piece_fill(m, &part.ground, w, piece);
-        if (lack == 0) lack = part_need(m, &part, left, w, piece, &needed);
+        unsigned lack = kent_piece_fill(m, &place, w, piece);
+        if (lack == 0) lack = part_need(m, &part, left, room, w, piece, &needed);
         if (lack != 0) return lack;
         w->piece_count++;
-        if (isinf(part.reach) || needed <= part.reach) {
-            piece->length = needed;
-            w->length = length + needed;
-            if (isfinite(needed)) return 0;
+        const double most = fmin(part.reach, room);
+        piece->length = fmin(needed, most);
+        w->length = length + piece->length;
+        w->gives += piece->resistance * piece->length;
+        if (isinf(piece->length)) {
             return piece->counts ? KENT_LACK_GRIP : KENT_LACK_SOUND;
         }
+        if (needed <= most || room <= part.reach) return 0;
         piece->counts = piece->resistance > 0.0;
-        piece->length = part.reach;
-        length += part.reach;
-        left -= piece->resistance * part.reach;
-        part = part_from(m, part.pipe, part.ahead, part_place(&part, part.reach));
+        length = w->length;
+        left -= piece->resistance * piece->length;
+        part = part_next(m, &part, &w->own, length);
     }
 }
 
@@ -366,15 +283,15 @@ static kent_sound sound_point(const kent_model *m, const kent_port *port)
     const kent_pipe *pipe = &m->pipes[span->pipe];
     const bool ahead = port->sign > 0.0;
     const double start = m->chainage[pipe->route_first];
-    const double here = kent_port_chainage(m, port);
-    const double length = pipe_length(m, span->pipe);
+    const double here = kent_along_of(m, port).at;
+    const double length = kent_pipe_laid(m, span->pipe);
     kent_sound sound = {ahead ? length - here : here, NULL, -1};
 
     for (size_t k = 0; k < pipe->route_count; k++) {
         const size_t stop = pipe->route_first + (ahead ? k : pipe->route_count - 1 - k);
         const double there = m->chainage[stop] - start;
         const double away = ahead ? there - here : here - there;
-        if (!(away > SAME_PLACE)) continue;
+        if (!(away > KENT_SAME_PLACE)) continue;
         const int own = m->points[m->route[stop]].soil;
         const int soil =
             own >= 0 ? own : kent_model_ground_at(m, span->pipe, there).soil;
@@ -388,8 +305,8 @@ kent_sound kent_leg_sound(const kent_model *m, const kent_port *port)
 {
     const int pipe = m->spans[port->span].pipe;
     const bool ahead = port->sign > 0.0;
-    const double here = kent_port_chainage(m, port);
-    const double step = ahead ? SAME_PLACE : -SAME_PLACE;
+    const double here = kent_along_of(m, port).at;
+    const double step = ahead ? KENT_SAME_PLACE : -KENT_SAME_PLACE;
     const kent_sound point = sound_point(m, port);
 
     for (double x = kent_zone_edge(m, pipe, here, ahead);

@@ -3,6 +3,7 @@
 #define KENT_LEG_INTERNAL_H
 
 #include "kent_restraint.h"
+#include "kent_along.h"
 
 /* Where fittings stand along spans: by span, then chainage, then fitting. */
 typedef struct kent_standing {
@@ -39,43 +40,76 @@ typedef enum kent_lack {
 
 enum { KENT_LEG_PIECES = 8 }; /* most stretches of different ground along one leg */
 
+/* Why the ground of a piece holds nothing. */
+typedef enum kent_free {
+    KENT_FREE_NOT,
+    KENT_FREE_SOIL,   /* native ground that can't be relied on */
+    KENT_FREE_FILL,   /* backfill that can't be */
+    KENT_FREE_CASING, /* the pipe runs in a casing */
+    KENT_FREE_ABOVE   /* or above ground, on supports */
+} kent_free;
+
 /* A leg's stretch in one kind of ground: to the edge of a zone, or to its end. */
 typedef struct kent_leg_piece {
-    const kent_soil *soil;
-    int trench_kind; /* -1: not stated */
-    bool counts;     /* false: ground that can't be relied on, passed through */
-    int weakest;     /* point whose ground this is, the least along; -1: none of them */
-    kent_trench trench;
+    const kent_soil *soil; /* native, which bears; NULL: not stated, nor needed */
+    const kent_soil *fill; /* that rubs on the pipe; the same where none is stated */
+    const kent_pipe *pipe;
+    int pipe_index;
+    double pipe_weight; /* N/m, before the water displaced is taken off */
+    int trench_kind;    /* -1: not stated */
+    kent_free free;
+    bool counts; /* false: passed through, it holds nothing */
+    int weakest; /* point whose ground this is, the least along; -1: none of them */
+    kent_trench trench; /* in the fill: friction */
+    kent_trench side;   /* in the native soil: bearing */
     kent_soil_grip grip;
+    double rise;              /* m per metre along the leg, + uphill */
+    double slope_load;        /* N/m, factored, that the slope asks for */
     double displaced;         /* N/m, 0 above the water table */
     double friction, bearing; /* N/m, as used */
-    double resistance;        /* N/m, of both */
+    double resistance;        /* N/m, of both, less slope_load */
     double length;            /* m */
 } kent_leg_piece;
 
-/* Of `count` stops from `first` on, the first whose chainage from there (m) is not
- * below this one; first + count where all are. */
-size_t kent_stop_search(const kent_model *m, size_t first, size_t count,
-                        double chainage);
-
 /* Everything that gives one leg's length, kept for the hand calculation. */
 typedef struct kent_leg_work {
-    const kent_pipe *pipe;
-    double pipe_weight; /* N/m, before the water displaced is taken off */
-    double sleeve;      /* factor on friction: 1 for a bare pipe */
-    bool bend;          /* half the perimeter; else the whole */
-    bool bears;         /* half the passive resistance counts */
-    bool turns_back;    /* a bend beyond a right angle: each leg by friction alone */
-    double force;       /* N, pressure x area of a bend's leg, or the whole thrust */
-    double angle;       /* rad */
+    const kent_pipe *pipe; /* that it begins with */
+    double sleeve;         /* factor on friction: 1 for a bare pipe */
+    bool bend;             /* half the perimeter; else the whole */
+    bool bears;            /* half the passive resistance counts */
+    bool turns_back;       /* a bend beyond a right angle: each leg by friction alone */
+    bool side_alone;       /* the whole bearing and no friction: of a tee's run */
+    double force;          /* N, pressure x area of a bend's leg, or the whole thrust */
+    double angle;          /* rad */
     double factor;
+    double run[2], run_bearing[2]; /* m, N: of a tee's run, restrained and credited */
+    double credit;                 /* N, of them */
+    bool run_unknown;              /* no credit could be worked out for a run stated */
     double demand; /* N, that friction and bearing along the leg must make up */
+    double limit;  /* m at which the leg ends, its demand made up or not */
+    kent_length_form form;
     kent_leg_piece piece[KENT_LEG_PIECES];
     size_t piece_count;
     double own; /* m of it in the ground of the fitting itself; INFINITY: all of it */
     const kent_soil *lacking; /* whose values are missing; NULL */
     double length;            /* m, of all pieces */
+    double gives;             /* N, of all pieces */
+    double by_form[2];        /* m, by kent_length_form; NAN: that form has none */
 } kent_leg_work;
+
+/* Ground, pipe and slope at a place along a leg. */
+typedef struct kent_leg_place {
+    kent_ground_here ground;
+    int pipe;
+    double rise; /* m per metre of pipe, + uphill */
+} kent_leg_place;
+
+/* A piece there, without its length. Returns 0, or what is missing. */
+unsigned kent_piece_fill(const kent_model *m, const kent_leg_place *place,
+                         kent_leg_work *w, kent_leg_piece *out);
+/* Ground that holds less takes the piece's place; point: whose it is, -1. */
+unsigned kent_piece_weaken(const kent_model *m, const kent_leg_place *place, int point,
+                           kent_leg_work *w, kent_leg_piece *piece);
 
 /* How the legs of a fitting are restrained. */
 typedef struct kent_leg_rule {
@@ -95,13 +129,47 @@ bool kent_leg_bears(const kent_fitting *fitting, kent_vec3 thrust);
 
 /* One leg under a thrust (N). Returns 0, or the keys that are missing as a sum of
  * kent_lack: then no length is given. */
-unsigned kent_leg_prepare(const kent_model *m, const kent_fitting *fitting, size_t port,
-                          kent_vec3 thrust, double factor, kent_leg_work *out);
+unsigned kent_leg_prepare(const kent_model *m, const kent_standings *standings,
+                          size_t index, size_t port, kent_vec3 thrust, double factor,
+                          kent_leg_work *out);
 
-/* Where a leg of this length would end: whether before anything that breaks it. Says
- * what it meets in notes. own: m of it in the ground of the fitting itself. */
-bool kent_leg_fits(const kent_model *m, const kent_standings *standings, size_t fitting,
-                   size_t port, double length, double own, kent_notes *notes);
+/* Fills what follows from the demand (N): pieces and length, by the form of the rules
+ * and beside it by the other. Returns 0, or what is missing. */
+unsigned kent_leg_measure(const kent_model *m, const kent_fitting *fitting,
+                          const kent_port *port, kent_leg_work *w);
+
+/* ---- how far it may run ---------------------------------------------------------- */
+
+enum { KENT_LEG_RUNS = 8, KENT_LEG_PASSED = 8 };
+
+typedef struct kent_leg_run { /* along one pipe */
+    int pipe;
+    double from, to; /* m from the pipe's start, from < to */
+} kent_leg_run;
+
+/* Where a leg of some length leads. */
+typedef struct kent_leg_walk {
+    kent_leg_end end;
+    int point;    /* at which it ends; -1: in plain pipe */
+    int fitting;  /* that ends it; -1 */
+    double reach; /* m up to there */
+    kent_leg_run run[KENT_LEG_RUNS];
+    size_t run_count;
+    int passed[KENT_LEG_PASSED]; /* bends and tees that it runs through */
+    size_t passed_count;
+} kent_leg_walk;
+
+/* own: m of it in the ground of the fitting itself. */
+kent_leg_walk kent_leg_walk_of(const kent_model *m, const kent_standings *standings,
+                               size_t fitting, const kent_port *port, double length,
+                               double own);
+
+/* Whether it may end like that. */
+bool kent_leg_end_fits(kent_leg_end end);
+
+/* Pipes and m of a leg as walked, where it ends in plain pipe rounded up to whole ones
+ * of the last pipe. Returns 0 where some pipe length is not known. */
+int kent_leg_whole(const kent_model *m, const kent_leg_walk *walk, double *length);
 
 /* Where ground that counts begins along a pipe. */
 typedef struct kent_sound {
@@ -119,9 +187,6 @@ kent_sound kent_leg_sound(const kent_model *m, const kent_port *port);
 unsigned kent_leg_pieces(const kent_model *m, const kent_fitting *fitting,
                          const kent_port *port, kent_leg_work *w);
 
-/* m from the pipe's start; at the port. */
-double kent_port_chainage(const kent_model *m, const kent_port *port);
-
 /* m: the next edge of a zone along a pipe from a chainage, one way; INFINITY (ahead) or
  * -INFINITY (back): none. */
 double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead);
@@ -130,5 +195,6 @@ double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead);
 const kent_soil *kent_point_soil(const kent_model *m, int point);
 bool kent_soil_counts(
     const kent_soil *soil); /* stated, natural, reliable, some bearing */
+bool kent_fill_counts(const kent_soil *soil); /* natural, placed and reliable */
 
 #endif

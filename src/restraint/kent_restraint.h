@@ -63,15 +63,24 @@ typedef struct kent_trench {                              /* inputs, all SI */
     double unit_weight;                                   /* N/m3 */
     double friction_angle, cohesion;                      /* rad, Pa */
     double friction_ratio, adhesion_ratio, passive_ratio; /* - */
+    double slope; /* rad, of the pipe against the level; 0: level */
 } kent_trench;
 
 kent_soil_grip kent_soil_grip_of(const kent_trench *t);
+
+/* N/m: the bearing that USACE ETL 1110-3-446 counts on in place of Rs, which leaves
+ * cohesion out. source 11.19 */
+double kent_soil_bearing_etl(const kent_trench *t);
 
 /* m, before rounding up to whole pipes. force N is pressure x area (unfactored), angle
  * rad; friction and bearing N/m; bearing 0 for a crest. */
 double kent_restrained_length_bend(double force, double angle, double factor,
                                    double friction, double bearing);
 double kent_restrained_length_end(double force, double factor, double friction);
+/* The same of a tee's branch, less what the bearing of its restrained run takes off
+ * (credit N); 0 where that is all. source 11.21 */
+double kent_restrained_length_branch(double force, double factor, double credit,
+                                     double friction);
 
 /* ---- every fitting of a model ---------------------------------------------------- */
 
@@ -103,6 +112,7 @@ typedef struct kent_block {
 typedef enum kent_leg_end {
     KENT_LEG_IN_GROUND,    /* plain pipe */
     KENT_LEG_AT_STRUCTURE, /* a wall piece, which holds what is left */
+    KENT_LEG_AT_DEAD_END,  /* one with restrained joints: the two are one system */
     KENT_LEG_AT_FITTING,   /* one that breaks it: it does not fit */
     KENT_LEG_AT_SOFT,      /* ground that gives no restraint: it does not fit */
     KENT_LEG_AT_PIPE_END   /* no pipe goes on: it does not fit */
@@ -116,6 +126,9 @@ typedef struct kent_leg { /* restrained length of one port */
     double by_form[2];    /* m, by kent_length_form; NAN: that form has none for this */
     kent_length_form form; /* that sizes */
     double pull;           /* N, unfactored, along the leg at the fitting */
+    double factor;         /* on it */
+    double demand; /* N, factored, that the ground along it must make up (11.16) */
+    bool bears;    /* half the bearing of the trench side counts along it */
     double credit; /* N, that the bearing of a tee's restrained run takes off (11.20) */
     kent_leg_end end;
     int end_point;         /* where; -1: in plain pipe */
@@ -179,5 +192,6 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
 void kent_restraints_free(kent_restraints *r);
 
 const char *kent_block_word(kent_block_type type);
+const char *kent_leg_end_word(kent_leg_end end); /* "in-ground", "structure" ... */
 
 #endif
