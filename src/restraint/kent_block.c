@@ -66,6 +66,9 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
         return KENT_FAULT_FACE;
     }
     out->face_thickness = kent_site_thickness(rules, site, out->face, KENT_SIDEWAYS);
+    if (site->all_round) {
+        out->face_thickness = fmax(out->face_thickness, out->face.width);
+    }
     return KENT_FAULT_NONE;
 }
 

@@ -88,10 +88,15 @@ static void derive_sides(const kent_holding_work *w, kent_holding *h)
                          "rx*h", "10.6", "width, at most");
     kent_derivation_work(d, "base", axis + 0.5 * face->height, KENT_LENGTH,
                          "axis + h/2", "10.2", "depth of the face's base");
-    const double t = h->block.has_face ? h->block.face_thickness : h->block.thickness;
+    const double spread = kent_site_thickness(r, &w->site, *face, KENT_SIDEWAYS);
+    const double t = w->site.all_round ? fmax(spread, face->width) : spread;
     kent_concrete_derive_thickness(
-        w, d, *face, t, "max(w, h)",
+        w, d, *face, spread, "max(w, h)",
         "thickness: spread from pipe to face within 45 degrees");
+    if (w->site.all_round) {
+        kent_derivation_work(d, "t", t, KENT_LENGTH, "max(t, w)", "9.19",
+                             "and as wide on its other sides");
+    }
     kent_derivation_work(d, "V", face->width * face->height * t, KENT_VOLUME, "w*h*t",
                          "10.8", "concrete");
 }

@@ -23,6 +23,7 @@ typedef struct kent_site {  /* what a block stands in; m, Pa */
     double allowable;       /* on a face at this depth; NAN: not known, as gap says */
     double vertical;        /* under a base; NAN: not stated */
     double hole;            /* m2 of a face that the pipe passes through; 0: none */
+    bool all_round;         /* a face on every side: it is pushed to all of them */
     double falls;           /* rad, that the ground falls along the thrust; 0 */
     const kent_soil *soil;  /* NULL: not stated */
     const kent_soil *fill;  /* between face and ground; NULL: the face meets ground */

@@ -95,7 +95,8 @@ static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
 
     if (!s || h->by_sense[KENT_SIDEWAYS] < 0) return;
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
-    const double presses = w->use[KENT_SIDEWAYS] * w->site.allowable / c->safety_factor;
+    const double presses =
+        w->use[KENT_SIDEWAYS] * w->site.allowable * c->increase / c->safety_factor;
     kent_bearing_gap gap = KENT_BEARING_KNOWN;
     kent_soil own = *s;
     own.passive_share = 1.0;
@@ -135,40 +136,6 @@ static void caution_wet(const kent_holding_work *w, kent_holding *h)
                    w->soil->id);
 }
 
-/* N: how much of an instant's sideways thrust goes against this one. */
-static double against(const kent_instant *at, kent_vec3 thrust)
-{
-    if (!at->set) return 0.0;
-    const kent_vec3 t = kent_instant_lasting(at);
-    return -(t.x * thrust.x + t.y * thrust.y) / kent_thrust_horizontal(thrust);
-}
-
-/* A face bears one way. Suction, or pressure where suction governs, pulls the other. */
-static void caution_reversal(const kent_holding_work *w, kent_holding *h)
-{
-    const kent_load_case *governs = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
-    const kent_vec3 thrust = kent_instant_lasting(&governs->worst[KENT_SIDEWAYS]);
-    const kent_load_case *worst = NULL;
-    double pull = KENT_HOLDING_LEAST;
-
-    for (size_t i = 0; i < w->loads->count; i++) {
-        const kent_load_case *c = &w->loads->cases[i];
-        const kent_instant *at[] = {&c->lowest, &c->highest, &c->worst[KENT_SIDEWAYS]};
-        for (size_t k = 0; k < sizeof at / sizeof at[0]; k++) {
-            if (!(against(at[k], thrust) >= pull)) continue;
-            pull = against(at[k], thrust);
-            worst = c;
-        }
-    }
-    if (!worst) return;
-    kent_notes_add(
-        &h->cautions,
-        "'%s' also pulls the other way, with %s sideways before any factor: "
-        "the face does not bear that way, so tie the fitting to a block that "
-        "holds it",
-        worst->title.s, kent_said_of(KENT_FORCE, w->m->units, pull).s);
-}
-
 static void caution_block(const kent_holding_work *w, kent_holding *h)
 {
     const kent_system units = w->m->units;
@@ -184,12 +151,10 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
         kent_ground_caution(w, h);
     }
     caution_wet(w, h);
-    if (w->site.hole > 0.0) {
+    if (w->site.hole > 0.0 && !w->site.all_round) {
         kent_notes_add(&h->cautions,
                        "the thrust runs along a trench or comes from either side: both "
                        "faces must reach undisturbed ground, not backfill");
-    } else if (w->demand.load[KENT_SIDEWAYS] > 0.0) {
-        caution_reversal(w, h);
     }
     if (w->demand.load[KENT_UPWARD] > 0.0) {
         kent_notes_add(&h->cautions,
@@ -317,6 +282,7 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
                        kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s);
     }
     caution_test_pressure(w, h);
+    kent_other_ways_caution(w, h);
     if (h->needs_nothing || h->unbalanced) return;
     caution_peak(w, h);
     caution_block(w, h);

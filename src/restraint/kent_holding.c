@@ -23,20 +23,29 @@ double kent_holding_part(const kent_load_case *c, kent_sense sense)
     return kent_vec3_length(t);
 }
 
+double kent_holding_load(const kent_load_case *c, kent_sense sense)
+{
+    const bool bears = sense == KENT_SIDEWAYS || sense == KENT_DOWNWARD;
+    return c->safety_factor * kent_holding_part(c, sense) / (bears ? c->increase : 1.0);
+}
+
 /* ---- what governs ---------------------------------------------------------------- */
 
-/* The case with the greatest factored load of a sense, leaving one out (-1: none left
- * out); -1 where no case has any. */
-static int case_greatest(const kent_fitting_loads *loads, kent_sense sense, int leave,
+/* The case with the greatest factored load of a sense; -1 where no case has any. Beside
+ * another, which is left out (-1: none): of those that push sideways the same way. */
+static int case_greatest(const kent_fitting_loads *loads, kent_sense sense, int beside,
                          double *load)
 {
+    const kent_load_case *known =
+        beside >= 0 && sense == KENT_SIDEWAYS ? &loads->cases[beside] : NULL;
     int greatest = -1;
 
     *load = 0.0;
     for (size_t i = 0; i < loads->count; i++) {
         const kent_load_case *c = &loads->cases[i];
-        const double factored = c->safety_factor * kent_holding_part(c, sense);
-        if ((int)i == leave || !(factored > *load * (1.0 + TIE))) continue;
+        const double factored = kent_holding_load(c, sense);
+        if ((int)i == beside || !(factored > *load * (1.0 + TIE))) continue;
+        if (known && !kent_one_way(known, c)) continue;
         greatest = (int)i;
         *load = factored;
     }
@@ -87,6 +96,7 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h)
     holding_govern(w, h, sense_greatest(w->factored));
     h->needs_nothing = w->fitting->within_deflection ||
                        !(greatest_unfactored(w->loads) >= KENT_HOLDING_LEAST);
+    kent_other_ways_find(w, h);
     if (h->by_sense[KENT_RESULTANT] < 0) return;
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_RESULTANT]];
     w->pull = kent_instant_lasting(&c->worst[KENT_RESULTANT]);

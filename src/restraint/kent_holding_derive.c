@@ -49,6 +49,38 @@ static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
            fabs(y->value - thrust.y) <= near && fabs(z->value - thrust.z) <= near;
 }
 
+/* The load with its factor, the block's share of it, and what soil may bear more. */
+static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_case *c,
+                            double part)
+{
+    kent_derivation *d = &h->derivation;
+    const bool shared = sense != KENT_RESULTANT && h->block_share < 1.0;
+    const bool more =
+        c->increase != 1.0 && (sense == KENT_SIDEWAYS || sense == KENT_DOWNWARD);
+    const double load = kent_holding_load(c, sense);
+    char formula[48];
+
+    if (shared) {
+        kent_derivation_put(d, "bs", h->block_share, KENT_RATIO, KENT_GIVEN,
+                            "part of the thrust that the block is for");
+    }
+    if (more) {
+        kent_derivation_put(d, "k", c->increase, KENT_RATIO, KENT_GIVEN,
+                            "soil may bear so many times as much in this case (9.18)");
+    }
+    (void)snprintf(formula, sizeof formula, "%s%s%s", shared ? "bs*" : "",
+                   SENSES[sense].formula_factored, more ? "/k" : "");
+    kent_derivation_work(d, SENSES[sense].factored,
+                         shared ? h->block_share * load
+                         : more ? load
+                                : c->safety_factor * part,
+                         KENT_FORCE, formula,
+                         shared ? "21.10"
+                         : more ? "9.18"
+                                : "10.11",
+                         shared ? "factored load on the block" : "factored load");
+}
+
 /* A thrust of one sense and its factored load (09 gives the thrust itself). */
 static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense sense)
 {
@@ -73,17 +105,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     }
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
                         kent_factor_source(w->m, c), kent_factor_says(w->m, c));
-    if (sense != KENT_RESULTANT && h->block_share < 1.0) {
-        (void)snprintf(says, sizeof says, "bs*%s", word->formula_factored);
-        kent_derivation_put(d, "bs", h->block_share, KENT_RATIO, KENT_GIVEN,
-                            "part of the thrust that the block is for");
-        kent_derivation_work(d, word->factored,
-                             h->block_share * c->safety_factor * part, KENT_FORCE, says,
-                             "21.10", "factored load on the block");
-    } else {
-        kent_derivation_work(d, word->factored, c->safety_factor * part, KENT_FORCE,
-                             word->formula_factored, "10.11", "factored load");
-    }
+    derive_factored(h, sense, c, part);
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
                    w->loads->cases[h->runner_up].title.s);

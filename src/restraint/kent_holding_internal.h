@@ -47,7 +47,20 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
  * force of the changing flow. */
 double kent_holding_part(const kent_load_case *c, kent_sense sense);
 
+/* N: the same with its factor, over what soil may bear more in such cases where soil
+ * bears it. source docs/theory/09-load-cases.md, 9.18 */
+double kent_holding_load(const kent_load_case *c, kent_sense sense);
+
 void kent_holding_find(kent_holding_work *w, kent_holding *h); /* what governs */
+
+/* Whether two cases push one way, sideways: one face bears both. */
+bool kent_one_way(const kent_load_case *a, const kent_load_case *b);
+
+/* What pushes other ways than what governs sideways, before anything is sized; what of
+ * that which holds takes them, after; and saying so. */
+void kent_other_ways_find(kent_holding_work *w, kent_holding *h);
+void kent_other_ways_take(const kent_holding_work *w, kent_holding *h);
+void kent_other_ways_caution(const kent_holding_work *w, kent_holding *h);
 /* What couple the pushes of a group leave, and whether a block on it could hold it.
  * source docs/theory/10-blocks.md, 10.30 */
 kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,

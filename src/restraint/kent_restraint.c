@@ -78,6 +78,7 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_routes(w, h);
         kent_holding_legs(w, h);
         kent_holding_footprint(w, h);
+        kent_other_ways_take(w, h);
         kent_holding_refuse(w, h);
         kent_concrete_finish(w, h);
     }

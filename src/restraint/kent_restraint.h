@@ -169,8 +169,8 @@ typedef struct kent_holding {
     double restrained_length; /* m, longest leg; NAN */
     kent_footprint footprint; /* what it takes up of the ground */
     kent_notes cautions;      /* of this fitting; says what would help where not held */
-    kent_notes remarks;       /* why no length stands beside what holds it: for its hand
-                                 calculation alone */
+    kent_notes remarks;       /* why no length stands beside what holds it, and what is
+                                 not counted on: for its hand calculation alone */
     kent_derivation derivation; /* every step */
 } kent_holding;
 

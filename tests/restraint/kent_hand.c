@@ -31,6 +31,7 @@ static kent_load_case hand_case(const kent_model *m, const kent_fitting *f,
         .scenario = surge ? 0 : -1,
         .state = surge ? 0 : -1,
         .safety_factor = from->factor,
+        .increase = 1.0,
         .above_90_percent = surge ? 3.0 : (double)NAN,
     };
 

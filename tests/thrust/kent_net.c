@@ -2,6 +2,7 @@
 
 #include "kent_check.h"
 
+#include <stdlib.h>
 #include <string.h>
 
 kent_net kent_net_of(kent_build build)
@@ -11,7 +12,10 @@ kent_net kent_net_of(kent_build build)
 
     kent_build_derive(&n.build);
     if (kent_steady_solve(n.model, &n.steady, &err)) fail_msg("%s", err.what);
-    if (kent_recorder_new(n.model, &n.steady, &n.recorder, &err)) {
+    n.states = malloc(sizeof(kent_steady *));
+    assert_non_null(n.states);
+    n.states[0] = n.steady;
+    if (kent_recorder_new(n.model, n.states, &n.recorder, &err)) {
         fail_msg("%s", err.what);
     }
     n.watches = kent_recorder_watches(n.recorder, &n.watch_count);
@@ -23,6 +27,7 @@ void kent_net_clear(kent_net *n)
 {
     kent_loads_free(n->loads);
     kent_recorder_free(n->recorder);
+    free(n->states);
     kent_steady_free(n->steady);
     kent_build_clear(&n->build);
     *n = (kent_net){0};

@@ -8,7 +8,7 @@
 typedef struct kent_net {
     kent_build build;
     const kent_model *model;
-    kent_steady *steady;
+    kent_steady *steady, **states; /* the recorder's list of one, which must not move */
     kent_recorder *recorder;
     kent_loads_result *loads;
     const kent_watch *watches;

@@ -71,7 +71,7 @@ static kent_net finished(kent_build b)
     return n;
 }
 
-/* How many cases of a fitting start so; name NULL: all. */
+/* How many cases of a fitting start so. */
 static size_t cases_of(const kent_net *n, const char *fitting, const char *start)
 {
     const kent_fitting_loads *loads =
