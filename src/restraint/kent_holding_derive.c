@@ -50,8 +50,7 @@ static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
 }
 
 /* The load with its factor, the block's share of it, and what soil may bear more. */
-static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_case *c,
-                            double part)
+static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_case *c)
 {
     kent_derivation *d = &h->derivation;
     const bool shared = sense != KENT_RESULTANT && h->block_share < 1.0;
@@ -71,10 +70,7 @@ static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_c
     (void)snprintf(formula, sizeof formula, "%s%s%s", shared ? "bs*" : "",
                    SENSES[sense].formula_factored, more ? "/k" : "");
     kent_derivation_work(d, SENSES[sense].factored,
-                         shared ? h->block_share * load
-                         : more ? load
-                                : c->safety_factor * part,
-                         KENT_FORCE, formula,
+                         (shared ? h->block_share : 1.0) * load, KENT_FORCE, formula,
                          shared ? "21.10"
                          : more ? "9.18"
                                 : "10.11",
@@ -105,7 +101,7 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     }
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO,
                         kent_factor_source(w->m, c), kent_factor_says(w->m, c));
-    derive_factored(h, sense, c, part);
+    derive_factored(h, sense, c);
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
                    w->loads->cases[h->runner_up].title.s);
