@@ -2,6 +2,7 @@
  * coefficient that this takes. */
 #include "kent_earth.h"
 #include "kent_holding_internal.h"
+#include "kent_said.h"
 
 #include <stdio.h>
 
@@ -220,7 +221,32 @@ static void derive_claim(const kent_holding_work *w, kent_derivation *d)
                          "10.24", "passive coefficient that this bearing takes");
 }
 
-void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d)
+/* What the soil's other ways would give, and what its own strength gives the face. */
+static void derive_others(const kent_holding_work *w, const kent_bearing_view *view,
+                          kent_derivation *d)
+{
+    static const char *const NAMES[KENT_BEARING_WAYS] = {"q_const", "q_table", "q_grad",
+                                                         "q_rank", "q_coul"};
+    char says[120];
+
+    for (kent_way k = KENT_WAY_CONSTANT; k < KENT_BEARING_WAYS; k++) {
+        const kent_bearing_way *way = &view->ways[k];
+        if (!view->seen || !way->stated || way->decides || isnan(way->area)) continue;
+        (void)snprintf(says, sizeof says, "%s, which does not decide: it asks for %s",
+                       kent_way_word(k),
+                       kent_said_of(KENT_AREA, w->m->units, way->area).s);
+        kent_derivation_put(d, NAMES[k], way->bearing, KENT_STRESS, KENT_COMPUTED,
+                            says);
+    }
+    if (!view->seen || isnan(view->passive)) return;
+    kent_derivation_put(d, "P_p", view->passive, KENT_FORCE, KENT_COMPUTED,
+                        "passive force on this face at failure, by Rankine (21.4)");
+    kent_derivation_put(d, "P_a", view->active, KENT_FORCE, KENT_COMPUTED,
+                        "active force behind it, not taken off here (21.5)");
+}
+
+void kent_bearing_derive(const kent_holding_work *w, const kent_holding *h,
+                         kent_derivation *d)
 {
     switch (w->site.leans->route) {
     case KENT_BEARING_CONSTANT:
@@ -238,4 +264,5 @@ void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d)
     }
     if (w->site.leans->route != KENT_BEARING_PASSIVE) derive_falling(w, d);
     derive_claim(w, d);
+    derive_others(w, &h->bearing, d);
 }

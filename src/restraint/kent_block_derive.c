@@ -126,7 +126,7 @@ static void derive_face(const kent_holding_work *w, kent_holding *h)
 
     kent_derivation_heading(d, "Face for the sideways thrust");
     derive_depth(w, h);
-    kent_bearing_derive(w, d);
+    kent_bearing_derive(w, h, d);
     kent_derivation_work(d, "Aq", load / q, KENT_AREA, "Fh/q", "10.4",
                          "bearing area asked for");
     if (hole) {
@@ -303,7 +303,7 @@ void kent_curve_derive(const kent_holding_work *w, kent_holding *h)
     kent_derivation_work(d, "ws", w->side_load, KENT_FORCE_PER_LENGTH,
                          "Fh/(2*sin(theta/2)*Rc)", "10.28", "side load, factored");
     derive_depth(w, h);
-    kent_bearing_derive(w, d);
+    kent_bearing_derive(w, h, d);
     kent_derivation_work(d, "qr", w->side_load / w->site.diameter, KENT_STRESS, "ws/OD",
                          "10.29", "bearing pressure reached on the pipe");
     derive_reached(w, h, KENT_SIDEWAYS, "qr/q");

@@ -114,3 +114,20 @@ void kent_ground_caution(const kent_holding_work *w, kent_holding *h)
     caution_slope(w, h);
     caution_fill(w, h);
 }
+
+/* Common practice of trade details, no source. */
+void kent_blocks_advise(kent_restraints *r)
+{
+    bool any = false;
+
+    for (size_t i = 0; i < r->fitting_count; i++) {
+        any = any || r->fittings[i].block.type != KENT_BLOCK_NONE;
+    }
+    if (!any) return;
+    kent_notes_add(
+        &r->cautions,
+        "blocks: keep them clear of joints, bolts and glands, with a film between "
+        "concrete and fitting; build them as shown (10 %% larger at most), since extra "
+        "height moves the face's centre off the pipe; and say on the drawing that the "
+        "ground before a face must not be dug away later");
+}

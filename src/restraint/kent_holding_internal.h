@@ -93,10 +93,14 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h);
 void kent_holding_caution(kent_holding_work *w, kent_holding *h);
 /* Of slope, fill, and how the bearing is told. */
 void kent_ground_caution(const kent_holding_work *w, kent_holding *h);
+/* What holds for every block alike, said once; nothing where there is none. */
+void kent_blocks_advise(kent_restraints *r);
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h);
 
 /* Parts of the hand calculation; all add to h's derivation. */
-void kent_bearing_derive(const kent_holding_work *w, kent_derivation *d); /* puts q */
+/* Puts q. */
+void kent_bearing_derive(const kent_holding_work *w, const kent_holding *h,
+                         kent_derivation *d);
 void kent_block_derive(const kent_holding_work *w, kent_holding *h);
 void kent_curve_derive(const kent_holding_work *w, kent_holding *h);
 void kent_leg_derive(const kent_holding_work *w, kent_holding *h, const kent_leg *leg);

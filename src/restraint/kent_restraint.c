@@ -137,6 +137,7 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
     }
     status = kent_space_find(m, r, err);
     if (status != KENT_OK) goto done;
+    kent_blocks_advise(r);
     if (!kent_concrete_conclude(m, r)) {
         status = kent_error_nomem(err);
         goto done;

@@ -425,6 +425,44 @@ static void every_key_of_the_results_is_there(void **state)
     kent_mixed_clear(&mixed);
 }
 
+/* Of every fitting; bearing where a face leans on ground. */
+static void ground_and_neighbours_have_their_keys(void **state)
+{
+    (void)state;
+    static const char *const of_bearing[] = {
+        "on_fill",    "depth_m",         "water_table_m",  "effective_stress_Pa",
+        "falls_deg",  "passive_force_N", "active_force_N", "factor_inside",
+        "cohesion_Pa"};
+    kent_mixed mixed = kent_mixed_new(false);
+    json_t *root = written(mixed.results);
+    json_t *fitting = NULL, *way = NULL;
+    size_t index = 0, k = 0, decide = 0, seen = 0;
+    json_array_foreach(json_object_get(root, "fittings"), index, fitting)
+    {
+        const json_t *ground = json_object_get(fitting, "ground");
+        const json_t *bearing = json_object_get(ground, "bearing");
+        assert_true(json_is_array(json_object_get(ground, "neighbours")));
+        walk(ground, "block_share", "ground");
+        walk(ground, "joints_share", "ground");
+        if (json_is_null(bearing)) continue;
+        seen++;
+        for (size_t i = 0; i < sizeof of_bearing / sizeof of_bearing[0]; i++) {
+            walk(bearing, of_bearing[i], "bearing");
+        }
+        json_array_foreach(json_object_get(bearing, "ways"), k, way)
+        {
+            decide += json_is_true(json_object_get(way, "decides")) ? 1 : 0;
+            assert_true(json_real_value(json_object_get(way, "bearing_Pa")) > 0.0);
+            assert_true(json_real_value(json_object_get(way, "area_m2")) > 0.0);
+            walk(way, "passive_coefficient", "way");
+        }
+    }
+    assert_true(seen > 0);
+    assert_int_equal(decide, seen);
+    json_decref(root);
+    kent_mixed_clear(&mixed);
+}
+
 static void legs_and_faces_have_their_keys(void **state)
 {
     (void)state;
@@ -750,6 +788,7 @@ int main(void)
         cmocka_unit_test(check_lists_all_that_was_understood),
         cmocka_unit_test(a_pumps_duty_stands_in_the_steady_state),
         cmocka_unit_test(every_key_of_the_results_is_there),
+        cmocka_unit_test(ground_and_neighbours_have_their_keys),
         cmocka_unit_test(legs_and_faces_have_their_keys),
         cmocka_unit_test(a_number_comes_back_with_every_bit),
         cmocka_unit_test(a_value_that_is_not_there_is_null),
