@@ -65,8 +65,8 @@ void kent_json_put_swings(kent_writer *w, size_t march);
  * nothing moved. */
 void kent_json_put_sensitivity(kent_writer *w);
 
-/* Of one fitting: its bearing by every way, the shares of block and joints, and who else
- * stands in that ground. */
+/* Of one fitting: its bearing by every way, the shares of block and joints, and who
+ * else stands in that ground. */
 json_t *kent_json_ground(const kent_results *r, size_t fitting);
 
 /* Scenarios beside those whose events they repeat: pairs, the other one first. */
