@@ -123,11 +123,9 @@ static size_t pressings(const kent_holding_work *w, const kent_block *b,
     const bool down = c->load[KENT_DOWNWARD] > 0.0;
     size_t count = 0;
 
-    if (c->load[KENT_SIDEWAYS] > 0.0) {
-        out[0] = pressing_of(w, KENT_SIDEWAYS, b->face,
-                             b->has_face ? b->face_thickness : b->thickness);
-        count = 1;
-    }
+    out[0] = pressing_of(w, KENT_SIDEWAYS, b->face,
+                         b->has_face ? b->face_thickness : b->thickness);
+    if (c->load[KENT_SIDEWAYS] > 0.0) count = 1;
     if (!down) return count;
     switch (b->type) {
     case KENT_BLOCK_NONE:
@@ -164,7 +162,11 @@ static void press(const kent_holding_work *w, const pressing *p, kent_concrete_c
     const double allowed = allowed_at(w, p, c->strength);
     const double use = p->load / (area * allowed); /* NaN: the contact is not known */
 
-    if (use <= c->use) return; /* the other body's is worse */
+    const double needed = c->strength * p->test / (area * allowed);
+    const bool milder = isnan(use) ? p->load <= c->load : use <= c->use;
+
+    c->strength_needed = fmax(c->strength_needed, needed);
+    if (milder) return; /* than the other body's */
     c->sense = p->sense;
     c->load = p->load;
     c->test_load = p->test;
@@ -177,7 +179,7 @@ static void press(const kent_holding_work *w, const pressing *p, kent_concrete_c
     c->splits = c->pressure > kent_concrete_pressed(c->code, c->strength) * FULL_USE;
     c->into = p->side;
     c->behind = p->thickness;
-    c->needed_pressed = c->strength * p->test / (area * allowed);
+    c->needed_pressed = needed;
 }
 
 static kent_concrete_check check_of(const kent_holding_work *w)
@@ -265,8 +267,8 @@ static void check_width(const kent_holding_work *w, kent_sense sense, kent_face 
     const kent_plain_use test =
         bent(rules, &w->site, side, thickness, made->test[sense]);
     c->needed_wide = fmax(c->needed_wide, strength_for(w, &test));
-    if (c->beyond_45 && use.bending <= c->wide.bending)
-        return; /* the other's is worse */
+    const bool milder = c->beyond_45 && use.bending <= c->wide.bending;
+    if (milder) return; /* than the other body's */
     c->beyond_45 = true;
     c->bends = sense;
     c->bent = side;
@@ -319,8 +321,9 @@ static kent_quantities quantities_of(const kent_holding_work *w, const kent_bloc
     const bool through = w->site.hole > 0.0;
     kent_quantities all = {0};
 
-    if (b->has_face)
+    if (b->has_face) {
         all = kent_quantity_face(b->face, b->face_thickness, axis, through);
+    }
     switch (b->type) {
     case KENT_BLOCK_NONE:
         break;
