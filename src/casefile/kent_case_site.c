@@ -217,3 +217,18 @@ void kent_fill_rules_check(kent_filling *f)
                        rules->safety_factor, rules->id, soil->id, rules->soils);
     }
 }
+
+void kent_fill_concrete_check(kent_filling *f)
+{
+    const kent_model *m = f->model;
+
+    if (m->rules.blocks == KENT_BLOCKS_FORBIDDEN) return;
+    if (isnan(m->concrete.strength)) {
+        kent_fill_assume_value(f, "strength of concrete",
+                               kent_concrete_usual(m->rules.concrete_code),
+                               KENT_STRENGTH, "a low class; no concrete stated");
+    }
+    kent_fill_assume(
+        f, "contact of fittings", "0.25 by 0.71 diameters",
+        "what any bend or cap presses on, where no contact_area is stated");
+}

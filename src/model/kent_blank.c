@@ -119,3 +119,14 @@ kent_port kent_port_blank(void)
                        .span = -1,
                        .toward = -1};
 }
+
+double kent_concrete_usual(kent_concrete_code code)
+{
+    switch (code) {
+    case KENT_EN_1992:
+        return 16e6;
+    case KENT_ACI_318:
+        break;
+    }
+    return 2500.0 * 4.4482216152605 / (0.0254 * 0.0254);
+}

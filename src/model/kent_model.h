@@ -781,6 +781,9 @@ typedef struct kent_concrete {
     kent_place place;
 } kent_concrete;
 
+/* Pa: strength taken where nobody states one. source docs/theory 19.1 */
+double kent_concrete_usual(kent_concrete_code code);
+
 /* ---- derived --------------------------------------------------------------------- */
 
 /* A stretch of one pipe between two nodes: what engine and steady state know. */

@@ -13,17 +13,6 @@ static const double ACI_PLAIN = 0.60;   /* strength reduction factor */
 static const double ACI_PRESSED = 0.85; /* of the strength */
 static const double ACI_ROUGH = 2.0 * 0.0254; /* m lost against soil */
 
-double kent_concrete_usual(kent_concrete_code code)
-{
-    switch (code) {
-    case KENT_EN_1992:
-        return 16e6;
-    case KENT_ACI_318:
-        break;
-    }
-    return 2500.0 * PSI;
-}
-
 double kent_concrete_least_factor(kent_concrete_code code)
 {
     switch (code) {

@@ -15,9 +15,6 @@ typedef struct kent_face {
     double width, height; /* m */
 } kent_face;
 
-/* Pa: strength taken where nobody states one. source docs/theory 19.1 */
-double kent_concrete_usual(kent_concrete_code code);
-
 /* The factor that a code puts on a variable load: concrete is designed for no less of
  * it. source docs/theory 19.2 */
 double kent_concrete_least_factor(kent_concrete_code code);

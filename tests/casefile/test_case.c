@@ -75,6 +75,8 @@ static void defaults_are_those_of_the_table_and_are_said(void **state)
     assert_non_null(assumed(m, "wall of DI-EN545-C40-DN300"));
     assert_non_null(assumed(m, "allowable bearing of sand-SP"));
     assert_non_null(assumed(m, "design rules"));
+    assert_non_null(strstr(assumed(m, "strength of concrete"), "16 MPa"));
+    assert_non_null(strstr(assumed(m, "contact of fittings"), "0.71 diameters"));
     assert_null(assumed(m, "ground water"));  /* stated: none */
     assert_null(assumed(m, "safety factor")); /* stated */
     kent_model_free(m);
