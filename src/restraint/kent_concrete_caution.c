@@ -106,9 +106,5 @@ bool kent_concrete_conclude(const kent_model *m, kent_restraints *r)
     }
     if (slowest < 0) return true;
     caution_age(m, r, slowest);
-    kent_notes_add(
-        &r->cautions,
-        "keep joints, bells and bolts clear of the blocks' concrete, with film "
-        "or felt between it and the fitting, which is not to be encased");
     return !r->cautions.failed;
 }

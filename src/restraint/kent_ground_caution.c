@@ -126,8 +126,9 @@ void kent_blocks_advise(kent_restraints *r)
     if (!any) return;
     kent_notes_add(
         &r->cautions,
-        "blocks: keep them clear of joints, bolts and glands, with a film between "
-        "concrete and fitting; build them as shown (10 %% larger at most), since extra "
+        "blocks: keep them clear of joints, bells, bolts and glands, with film or felt "
+        "between concrete and fitting, which is not to be encased; build them as shown "
+        "(10 %% larger at most), since extra "
         "height moves the face's centre off the pipe; and say on the drawing that the "
         "ground before a face must not be dug away later");
 }

@@ -461,7 +461,7 @@ static void what_presses_under_the_test_takes_days_too(void **state)
     assert_true(said(&x.r->cautions,
                      "at B it wants 16.0 MPa by then, of 20.0 MPa at 28 "
                      "days"));
-    assert_true(said(&x.r->cautions, "keep joints, bells and bolts clear"));
+    assert_true(said(&x.r->cautions, "keep them clear of joints, bells"));
     let_go(&x);
 }
 
