@@ -123,36 +123,75 @@ static void read_by_depth(kent_reader *r, kent_record *record, kent_soil *soil)
     soil->by_depth_count = count;
 }
 
-/* The one route that is given replaces whatever *soil had, and the factor inside goes
+static const struct {
+    const char *key;
+    kent_bearing_route route;
+} ROUTES[] = {{"allowable_bearing", KENT_BEARING_CONSTANT},
+              {"bearing_by_depth", KENT_BEARING_BY_DEPTH},
+              {"bearing_gradient", KENT_BEARING_GRADIENT},
+              {"passive_share", KENT_BEARING_PASSIVE}};
+
+enum { ROUTES_COUNT = sizeof ROUTES / sizeof ROUTES[0] };
+
+static bool states_route(const kent_soil *soil, kent_bearing_route route)
+{
+    switch (route) {
+    case KENT_BEARING_CONSTANT:
+        return !isnan(soil->allowable_bearing);
+    case KENT_BEARING_BY_DEPTH:
+        return soil->by_depth_count > 0;
+    case KENT_BEARING_GRADIENT:
+        return !isnan(soil->bearing_gradient);
+    case KENT_BEARING_PASSIVE:
+        return !isnan(soil->passive_share);
+    }
+    return false;
+}
+
+/* Which of several bearings decides: the words of bearing_route stand in the order of
+ * ROUTES. */
+static void read_route(kent_reader *r, kent_record *record, kent_soil *soil)
+{
+    const int route = kent_record_field(record, "bearing_route")->index;
+
+    if (route < 0 || !record->sound) return;
+    soil->route = ROUTES[route].route;
+    if (states_route(soil, soil->route)) return;
+    kent_record_complain(r, record, "bearing_route",
+                         "bearing_route names a bearing that is not given; give %s, or "
+                         "name another",
+                         ROUTES[route].key);
+}
+
+/* The bearings that are given replace whatever *soil had, and the factor inside goes
  * with the bearing it was inside of. */
 static void read_bearing(kent_reader *r, kent_record *record, kent_soil *soil)
 {
-    static const struct {
-        const char *key;
-        kent_bearing_route route;
-    } ROUTES[] = {{"allowable_bearing", KENT_BEARING_CONSTANT},
-                  {"bearing_by_depth", KENT_BEARING_BY_DEPTH},
-                  {"bearing_gradient", KENT_BEARING_GRADIENT},
-                  {"passive_share", KENT_BEARING_PASSIVE}};
+    const bool told = kent_record_has(record, "bearing_route");
     const char *first = NULL;
-    for (size_t i = 0; i < sizeof ROUTES / sizeof ROUTES[0]; i++) {
+    for (size_t i = 0; i < ROUTES_COUNT; i++) {
         if (!kent_record_has(record, ROUTES[i].key)) continue;
-        if (first) {
+        if (first && !told) {
             kent_record_complain(r, record, ROUTES[i].key,
-                                 "%s and %s are both given; keep one", first,
-                                 ROUTES[i].key);
+                                 "%s and %s are both given; say by bearing_route which "
+                                 "decides, or keep one",
+                                 first, ROUTES[i].key);
             return;
         }
+        if (!first) soil->route = ROUTES[i].route;
         first = ROUTES[i].key;
-        soil->route = ROUTES[i].route;
     }
-    if (!first) return;
-    soil->factor_inside = 1.0;
-    soil->allowable_bearing = kent_record_number(record, "allowable_bearing");
-    soil->bearing_gradient = kent_record_number(record, "bearing_gradient");
-    soil->passive_share = kent_record_number(record, "passive_share");
-    soil->by_depth_count = 0;
-    if (soil->route == KENT_BEARING_BY_DEPTH) read_by_depth(r, record, soil);
+    if (first) {
+        soil->factor_inside = 1.0;
+        soil->allowable_bearing = kent_record_number(record, "allowable_bearing");
+        soil->bearing_gradient = kent_record_number(record, "bearing_gradient");
+        soil->passive_share = kent_record_number(record, "passive_share");
+        soil->by_depth_count = 0;
+        if (kent_record_has(record, "bearing_by_depth")) {
+            read_by_depth(r, record, soil);
+        }
+    }
+    read_route(r, record, soil);
 }
 
 static int trench_of(const char *word)

@@ -104,6 +104,10 @@
                  "none",                                                               \
                  "angle of friction between soil and a block's face: Coulomb's "       \
                  "passive pressure in place of Rankine's"),                            \
+        WORD(g, "bearing_route", "presumptive|by-depth|per-depth|passive",             \
+             "the one that is given",                                                  \
+             "which bearing decides where several are given; the others are shown "    \
+             "beside it"),                                                             \
         WORD(g, "nature", "natural|fill|organic|expansive|liquefiable|collapsible",    \
              "natural", "what the ground is; all but natural is unreliable"),          \
         SWITCH(g, "unreliable", "false, but of a nature other than natural true",      \

@@ -61,6 +61,7 @@ void kent_holding_routes(kent_holding_work *w, kent_holding *h)
     for (kent_way k = KENT_WAY_CONSTANT; k < KENT_BEARING_WAYS; k++) {
         kent_bearing_way *way = &view->ways[k];
         kent_bearing_claim claim;
+        kent_soil own = *soil; /* the factor inside is that of what decides */
         *way = (kent_bearing_way){.bearing = NAN, .area = NAN, .passive = NAN};
         way->stated = kent_soil_states(soil, k);
         if (!way->stated) continue;
@@ -68,7 +69,8 @@ void kent_holding_routes(kent_holding_work *w, kent_holding *h)
         way->bearing = kent_way_bearing(soil, k, &at, &way->gap);
         if (!(way->bearing > 0.0)) continue;
         way->area = w->demand.load[KENT_SIDEWAYS] / way->bearing;
-        if (kent_bearing_claims_of(soil, way->bearing, &at, &claim)) {
+        own.factor_inside = way->decides ? soil->factor_inside : 1.0;
+        if (kent_bearing_claims_of(&own, way->bearing, &at, &claim)) {
             way->passive = claim.passive;
         }
     }

@@ -41,6 +41,16 @@ static void a_bearing_is_known_in_one_of_four_ways(void **state)
         /* a way of the case's own takes the place of the row's */
         {"from = \"sand-SP\"; bearing_gradient = \"31.4 kPa/m\";", NAN, 31.4e3, NAN,
          1.0, KENT_BEARING_GRADIENT, true},
+        /* several at once, one of which decides */
+        {"allowable_bearing = \"150 kPa\"; bearing_gradient = \"31.4 kPa/m\"; "
+         "bearing_route = \"per-depth\";",
+         150e3, 31.4e3, NAN, 1.0, KENT_BEARING_GRADIENT, true},
+        {"allowable_bearing = \"150 kPa\"; bearing_gradient = \"31.4 kPa/m\"; "
+         "bearing_route = \"presumptive\";",
+         150e3, 31.4e3, NAN, 1.0, KENT_BEARING_CONSTANT, true},
+        {"from = \"sand-SP\"; bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ), ( \"2 m\", "
+         "\"120 kPa\" ) ); passive_share = 0.4; bearing_route = \"by-depth\";",
+         NAN, NAN, 0.4, 1.0, KENT_BEARING_BY_DEPTH, true},
     };
     kent_catalogue *c = read_catalogue();
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
@@ -143,8 +153,11 @@ static void a_bearing_that_cannot_be_known_is_refused(void **state)
          "the "
          "passive earth pressure follows"},
         {"allowable_bearing = \"90 kPa\"; bearing_gradient = \"31 kPa/m\";",
-         "soil \"bank\": allowable_bearing and bearing_gradient are both given; keep "
-         "one"},
+         "soil \"bank\": allowable_bearing and bearing_gradient are both given; say by "
+         "bearing_route which decides, or keep one"},
+        {"allowable_bearing = \"90 kPa\"; bearing_route = \"per-depth\";",
+         "soil \"bank\": bearing_route names a bearing that is not given; give "
+         "bearing_gradient, or name another"},
         {"bearing_by_depth = ( ( \"1 m\", \"80 kPa\" ) );",
          "soil \"bank\": bearing_by_depth needs at least two pairs (depth, bearing); a "
          "bearing for every depth is allowable_bearing"},

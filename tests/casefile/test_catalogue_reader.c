@@ -90,7 +90,10 @@ static void a_soil_whose_bearing_is_not_clear_is_refused(void **state)
     } ROWS[] = {
         {"unreliable = false;", "its bearing is missing"},
         {"allowable_bearing = \"1 kPa\"; passive_share = 0.5;",
-         "allowable_bearing and passive_share are both given; keep one"},
+         "allowable_bearing and passive_share are both given; say by bearing_route "
+         "which decides, or keep one"},
+        {"bearing_gradient = \"30 kN/m^3\"; bearing_route = \"passive\";",
+         "bearing_route names a bearing that is not given; give passive_share"},
         {"bearing_by_depth = ( ( \"1 m\", \"50 kPa\" ) );", "at least two pairs"},
         {"bearing_by_depth = ( ( \"2 m\", \"50 kPa\" ), ( \"1 m\", \"60 kPa\" ) );",
          "pair 2 of bearing_by_depth: depths must rise"},
