@@ -186,8 +186,9 @@ static void fill_obstacles(kent_filling *f, kent_record *record, kent_fitting_no
 /* What only a fitting found from geometry can have. */
 static bool suits_ports(kent_filling *f, kent_record *record)
 {
-    static const char *const KEYS[] = {"branch", "together_with", "apart", "angle",
-                                       "orientation"};
+    static const char *const KEYS[] = {"branch",   "together_with", "apart",
+                                       "angle",    "orientation",   "run_restrained",
+                                       "can_close"};
     for (size_t i = 0; i < sizeof KEYS / sizeof KEYS[0]; i++) {
         if (!kent_record_has(record, KEYS[i])) continue;
         kent_record_complain(
@@ -273,5 +274,6 @@ void kent_fill_fitting(kent_filling *f, kent_record *record, size_t index)
     fill_branch(f, record, &n->branch);
     fill_together(f, record, n);
     fill_obstacles(f, record, n);
+    kent_fill_stated(f, record, n);
     check_fitting(f, record, n);
 }

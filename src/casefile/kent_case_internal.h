@@ -19,6 +19,7 @@ typedef struct kent_filling {
     size_t port_capacity;
     size_t level_capacity, scenario_state_capacity;
     size_t creep_capacity, obstacle_capacity, together_capacity;
+    size_t closes_capacity;
     size_t running_capacity, without_capacity, burst_capacity;
     const kent_material *creeping; /* whose elements stand in the model ... */
     size_t creep_first;            /* ... from here on */
@@ -54,6 +55,9 @@ void kent_fill_loads(kent_filling *f);
 void kent_fill_limits(kent_filling *f);
 void kent_fill_solver(kent_filling *f);
 void kent_fill_creep(kent_filling *f); /* cautions where nothing creeps that should */
+
+/* What is stated for the restraint of a fitting: slope, backing, shares, lengths. */
+void kent_fill_stated(kent_filling *f, kent_record *record, kent_fitting_note *n);
 
 /* Moves the index-th element of a list; its place in the model's array stands zeroed.
  */

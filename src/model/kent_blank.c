@@ -106,6 +106,7 @@ kent_fitting_note kent_note_blank(void)
                                           .outside_diameter = NONE,
                                           .inside_diameter = NONE},
                                .stated = kent_stated_blank(),
+                               .run = {{-1, NONE}, {-1, NONE}},
                                .place = {-1, 0}};
 }
 

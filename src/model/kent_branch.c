@@ -18,9 +18,21 @@ bool kent_branch_stands(const kent_model *m, const kent_fitting_note *note,
                         kent_seat device, size_t legs, kent_complaints *complaints)
 {
     const bool branch = note->branch.end != KENT_BRANCH_NONE;
-    const bool served = note->role != KENT_ROLE_NONE && !kent_role_on_run(note->role);
+    const bool in_line = kent_role_on_run(note->role);
+    const bool served = note->role != KENT_ROLE_NONE && !in_line;
     const bool end = note->role == KENT_ROLE_HYDRANT && legs == 1;
 
+    const bool pump = device.kind == KENT_SEAT_DEVICE &&
+                      m->devices[device.index].kind == KENT_DEVICE_PUMP;
+
+    if (in_line && (pump || device.kind == KENT_SEAT_LEVEL)) {
+        kent_place_complain(m, note->place, complaints,
+                            "fitting at \"%s\": a %s stands there; give the %s a point "
+                            "of its own on the pipe",
+                            m->points[note->point].id, pump ? "pump" : "fixed level",
+                            kent_role_word(note->role));
+        return false;
+    }
     if (!branch && !served) return true;
     if (device.kind == KENT_SEAT_VALVE) {
         return complain(m, note, complaints,
@@ -82,7 +94,7 @@ bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,
                             "its branch has no direction; write for instance "
                             "direction = [ 0.0, 1.0, 0.0 ]");
         }
-    } else if (note->role == KENT_ROLE_AIR_VALVE) {
+    } else if (note->role == KENT_ROLE_AIR_VALVE || note->role == KENT_ROLE_MANHOLE) {
         *out = (kent_vec3){0.0, 0.0, 1.0};
     } else if (surveyed) {
         const kent_vec3 left = to_the_left(ports, legs, 0.5 * PI);

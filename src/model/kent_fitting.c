@@ -148,6 +148,12 @@ static bool may_be_valve(const kent_site *site)
                               site->m->pumps[d->index].check_valve != KENT_CHECK_NONE);
 }
 
+/* Whether it is listed for what it is on the main, whatever the geometry. */
+static bool is_named_in_line(const kent_site *site)
+{
+    return site->note && kent_role_on_run(site->note->role);
+}
+
 /* What geometry and devices make of a point. */
 static int natural_type(const kent_site *site)
 {
@@ -157,8 +163,9 @@ static int natural_type(const kent_site *site)
     if (device == KENT_SEAT_DEVICE) return NO_FITTING; /* a pump, held by its base */
     const bool branch = site->branch.end != KENT_BRANCH_NONE;
     const bool hydrant = site->note && site->note->role == KENT_ROLE_HYDRANT;
+    const bool in_line = is_named_in_line(site);
     if (site->count == 1) {
-        const bool end = device != KENT_SEAT_OUTFLOW || branch || hydrant;
+        const bool end = device != KENT_SEAT_OUTFLOW || branch || hydrant || in_line;
         return end ? (int)KENT_DEAD_END : (int)NO_FITTING;
     }
     if (site->curved) return KENT_CURVE; /* kent_curve_check saw to its legs */
@@ -169,8 +176,7 @@ static int natural_type(const kent_site *site)
         const double turn = site->schematic ? (site->note ? site->note->angle : 0.0)
                                             : kent_ports_turn(site->ports);
         if (turn > KENT_LEAST_TURN) return KENT_BEND; /* NAN: none */
-        return site->note && kent_role_on_run(site->note->role) ? (int)KENT_STRAIGHT
-                                                                : (int)NO_FITTING;
+        return in_line ? (int)KENT_STRAIGHT : (int)NO_FITTING;
     }
     if (site->count + branch == 3) {
         return branch_angle_of(site) < KENT_WYE_BELOW ? KENT_WYE : KENT_TEE;
@@ -383,7 +389,6 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
         .zone = zone_of(m, l, point),
         .role = note ? note->role : KENT_ROLE_NONE,
         .branch = site.branch,
-        .stated = note ? note->stated : kent_stated_blank(),
         .obstacle_first = note ? note->obstacle_first : 0,
         .obstacle_count = note ? note->obstacle_count : 0,
         .port_count = site.count,
@@ -401,6 +406,7 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
         kent_curve_caution(m, out, &m->pipes[l->pipe[l->owner[point]]]);
     }
     kent_fitting_describe_ground(m, note, out);
+    if (!kent_stated_settle(m, note, out, ports, complaints)) return false;
     /* A bend named as one is a casting; one found by its small turn is a joint. */
     out->within_deflection = type == KENT_BEND && !(note && note->type >= 0) &&
                              !site.schematic && out->angle <= site.deflection;

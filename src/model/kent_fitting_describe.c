@@ -31,7 +31,8 @@ kent_restraint_choice kent_fitting_usual_restraint(const kent_fitting *f, bool r
     if (f->within_deflection || f->type == KENT_STRAIGHT || f->type == KENT_CURVE) {
         return KENT_NO_RESTRAINT;
     }
-    if (rigid) return KENT_RESTRAINED_JOINTS;
+    if (f->role == KENT_ROLE_WALL) return KENT_NO_RESTRAINT; /* its structure holds */
+    if (rigid && f->role != KENT_ROLE_FLANGE_ADAPTOR) return KENT_RESTRAINED_JOINTS;
     return f->type == KENT_REDUCER || f->type == KENT_VALVE ? KENT_ANCHOR_BLOCK
                                                             : KENT_THRUST_BLOCK;
 }

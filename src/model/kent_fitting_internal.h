@@ -24,4 +24,10 @@ void kent_fitting_describe_legs(kent_fitting *f, const kent_port *ports, size_t 
 void kent_fitting_describe_ground(const kent_model *m, const kent_fitting_note *note,
                                   kent_fitting *f);
 
+/* kent_stated.c: what a note states for the restraint, run lengths by port. False with
+ * a complaint where it names no leg of the fitting. note may be NULL. */
+bool kent_stated_settle(const kent_model *m, const kent_fitting_note *note,
+                        kent_fitting *f, const kent_port *ports,
+                        kent_complaints *complaints);
+
 #endif

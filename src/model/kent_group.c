@@ -1,6 +1,7 @@
 #include "kent_joining.h"
 
 #include <math.h>
+#include <string.h>
 
 #include "kent_said.h"
 
@@ -22,6 +23,7 @@ static bool may_join(const kent_joining *j, int fitting)
     const kent_fitting_note *note = note_on(j, fitting);
 
     if (f->point < 0 || f->within_deflection || (note && note->apart)) return false;
+    if (kent_role_on_run(f->role)) return false; /* held, or slipping, by itself */
     switch (f->type) {
     case KENT_BEND:
     case KENT_TEE:
@@ -209,6 +211,31 @@ static void take_soil(const kent_joining *j, const kent_fitting *member,
                                     : "none, as stated for one");
 }
 
+/* Whether something is stated that only a fitting by itself can have. */
+static bool states_own(const kent_stated *s)
+{
+    return s->closes_stated || !isnan(s->run_length[0]) || !isnan(s->run_length[1]);
+}
+
+/* The steeper slope and the weaker backing count; what goes by legs is lost. */
+static void take_stated(const kent_joining *j, const kent_fitting *member,
+                        kent_stated *stated)
+{
+    const kent_stated *s = &member->stated;
+    if (!isnan(s->slope.angle) && !(s->slope.angle <= stated->slope.angle)) {
+        stated->slope = s->slope;
+    }
+    if (s->backing == KENT_BACKING_FILL) stated->backing = s->backing;
+    if (isnan(stated->block_share)) stated->block_share = s->block_share;
+    if (isnan(stated->contact_area)) stated->contact_area = s->contact_area;
+    if (stated->reason[0] == '\0') memcpy(stated->reason, s->reason, sizeof s->reason);
+    if (!states_own(s)) return;
+    kent_notes_add(&j->m->cautions,
+                   "run_restrained and can_close of \"%s\" are not looked at, since it "
+                   "is held as one with others: write apart = true there",
+                   member->id);
+}
+
 /* What of a member's own a group cannot carry is said. */
 static void caution_lost(const kent_joining *j, const kent_fitting *group,
                          const kent_fitting *member)
@@ -235,6 +262,8 @@ static void take_in(const kent_joining *j, const kent_fitting *member, size_t nu
     const double share = 1.0 / (double)(number + 1); /* running mean */
     group->at = kent_vec3_add(
         group->at, kent_vec3_scale(share, kent_vec3_sub(member->at, group->at)));
+    if (number == 0) group->stated = kent_stated_blank();
+    take_stated(j, member, &group->stated);
     if (number == 0) return;
     take_soil(j, member, group);
     caution_lost(j, group, member);

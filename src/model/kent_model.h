@@ -721,6 +721,12 @@ typedef struct kent_stated {
     char reason[160]; /* for its restraint being as it is; may be empty */
 } kent_stated;
 
+/* A restrained length of a tee's run, towards one side. */
+typedef struct kent_stated_run {
+    int toward;    /* the next point along the run; -1: none stated */
+    double length; /* m */
+} kent_stated_run;
+
 /* What a case says of a fitting (list `fittings`). */
 typedef struct kent_fitting_note {
     char id[KENT_ID]; /* of a ports-only fitting, else its point's */
@@ -742,7 +748,8 @@ typedef struct kent_fitting_note {
     double rating; /* Pa, of its parts, as flanges are; NAN */
     double surge_rating, test_rating; /* Pa, the same with surge, under test; NAN */
     char standard[96];                /* that these are by; may be empty */
-    kent_stated stated;
+    kent_stated stated;            /* its run_length goes by ports, which run finds */
+    kent_stated_run run[2];        /* as the case names its sides */
     size_t port_first, port_count; /* into kent_model.given_ports; 0: from geometry */
     kent_place place;
 } kent_fitting_note;
@@ -1151,7 +1158,7 @@ kent_place kent_device_place(const kent_model *m, const kent_device *d);
 /* Words as in the case file and in results: "bend", "dead-end", "push-on" ... */
 const char *kent_fitting_type_word(kent_fitting_type type);
 const char *kent_role_word(kent_role role); /* "tapping-tee" ...; "": none */
-bool kent_role_on_run(kent_role role); /* something on the main itself, no branch */
+bool kent_role_on_run(kent_role role);      /* a piece of the main itself, no branch */
 const char *kent_branch_end_word(kent_branch_end end);
 const char *kent_trench_word(int trench); /* "type-1" ...; "" for -1 */
 const char *kent_orientation_word(kent_orientation orientation);
@@ -1160,6 +1167,7 @@ const char *kent_class_word(kent_class class_of);
 const char *kent_device_word(kent_device_kind kind); /* "air vessel" ... */
 const char *kent_restraint_word(kent_restraint_choice restraint);
 const char *kent_nature_word(kent_nature nature); /* "natural", "fill" ... */
+const char *kent_backing_word(kent_backing backing);
 const char *kent_block_policy_word(kent_block_policy policy);
 const char *kent_spread_word(kent_spread spread);
 const char *kent_concrete_code_word(kent_concrete_code code);

@@ -216,6 +216,20 @@ static bool port_is_valid(const kent_model *m, const kent_port *p)
            fabs(p->sign) - 1.0 == 0.0 && is_index(p->toward, m->point_count);
 }
 
+static bool stated_is_valid(const kent_model *m, const kent_stated *s)
+{
+    const kent_slope *slope = &s->slope;
+    const bool falls =
+        isnan(slope->angle) ||
+        (slope->angle >= 0.0 && kent_vec3_length(slope->direction) > 0.0);
+    const bool shared =
+        isnan(s->block_share) || (s->block_share > 0.0 && s->block_share <= 1.0);
+    return falls && shared &&
+           is_part(s->closes_first, s->closes_count, m->closes_count) &&
+           !(s->run_length[0] < 0.0) && !(s->run_length[1] < 0.0) &&
+           (isnan(s->contact_area) || is_positive(s->contact_area));
+}
+
 static bool fittings_are_valid(const kent_model *m)
 {
     for (size_t i = 0; i < m->fitting_count; i++) {
@@ -231,7 +245,7 @@ static bool fittings_are_valid(const kent_model *m)
             !is_trench_or_none(f->trench) ||
             !is_index_or_none(f->backfill, m->soil_count) ||
             (f->type == KENT_GROUP) > (f->member_count >= 2) ||
-            !isfinite(f->angle + f->weight)) {
+            !stated_is_valid(m, &f->stated) || !isfinite(f->angle + f->weight)) {
             return false;
         }
         for (size_t k = 0; k < f->port_count; k++) {
@@ -250,6 +264,7 @@ bool kent_model_is_valid(const kent_model *m)
            is_index_or_none(m->loads.future_gauge, m->point_count) &&
            are_indices(m->members, m->member_count, m->point_count) &&
            are_indices(m->together, m->together_count, m->point_count) &&
+           are_indices(m->closes, m->closes_count, m->point_count) &&
            ground_is_valid(m) && states_are_valid(m) && pipes_are_valid(m) &&
            devices_are_valid(m) && kent_devices_are_valid(m) &&
            scenarios_are_valid(m) && spans_are_valid(m) && nodes_are_valid(m) &&

@@ -63,6 +63,10 @@
     X(KENT_LIQUEFIABLE, "liquefiable")                                                 \
     X(KENT_COLLAPSIBLE, "collapsible")
 
+#define BACKINGS(X)                                                                    \
+    X(KENT_BACKING_NATURAL, "natural")                                                 \
+    X(KENT_BACKING_FILL, "compacted-fill")
+
 #define BLOCK_POLICIES(X)                                                              \
     X(KENT_BLOCKS_ALLOWED, "allowed")                                                  \
     X(KENT_BLOCKS_FORBIDDEN, "forbidden")                                              \
@@ -126,6 +130,7 @@ WORD_FUNCTION(kent_class_word, kent_class, class_of, CLASSES)
 WORD_FUNCTION(kent_device_word, kent_device_kind, kind, DEVICES)
 WORD_FUNCTION(kent_restraint_word, kent_restraint_choice, restraint, RESTRAINTS)
 WORD_FUNCTION(kent_nature_word, kent_nature, nature, NATURES)
+WORD_FUNCTION(kent_backing_word, kent_backing, backing, BACKINGS)
 WORD_FUNCTION(kent_block_policy_word, kent_block_policy, policy, BLOCK_POLICIES)
 WORD_FUNCTION(kent_spread_word, kent_spread, spread, SPREADS)
 WORD_FUNCTION(kent_concrete_code_word, kent_concrete_code, code, CONCRETE_CODES)
@@ -142,8 +147,7 @@ const char *kent_trench_word(int trench)
 
 bool kent_role_on_run(kent_role role)
 {
-    return role == KENT_ROLE_MANHOLE || role == KENT_ROLE_WALL ||
-           role == KENT_ROLE_FLANGE_ADAPTOR;
+    return role == KENT_ROLE_WALL || role == KENT_ROLE_FLANGE_ADAPTOR;
 }
 
 bool kent_joint_slips(kent_joint joint)

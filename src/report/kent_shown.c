@@ -252,9 +252,12 @@ static const char *role_or_type(const kent_fitting *fitting)
     case KENT_ROLE_MANHOLE:
         return end ? "manhole end" : "manhole tee";
     case KENT_ROLE_WALL:
-        return "wall piece";
+        if (fitting->type == KENT_STRAIGHT) return "wall piece";
+        if (end) return "end in a wall";
+        break;
     case KENT_ROLE_FLANGE_ADAPTOR:
-        return "flange adaptor";
+        if (fitting->type == KENT_STRAIGHT) return "flange adaptor";
+        break;
     }
     return end ? "dead end" : kent_fitting_type_word(fitting->type);
 }

@@ -53,6 +53,9 @@ void kent_view_add_device(const kent_view *v, const kent_device *d, kent_text *o
 /* One soil's values and where they come from, a paragraph. */
 void kent_view_soil(const kent_view *v, const kent_soil *s);
 
+/* What is stated for the restraint of a fitting, each in a sentence after a blank. */
+void kent_view_add_stated(const kent_view *v, const kent_fitting *f, kent_text *out);
+
 /* ---- the parts ------------------------------------------------------------------- */
 
 void kent_view_plan(const kent_view *v);   /* the main, point by point */

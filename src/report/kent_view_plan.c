@@ -313,6 +313,7 @@ static void add_ground(const plan *p, const kent_fitting *f, kent_text *out)
 static const char *why_restraint(const kent_fitting *f)
 {
     if (f->within_deflection) return "since the joint takes the turn";
+    if (f->role == KENT_ROLE_WALL) return "since the structure holds it";
     if (f->type == KENT_CURVE) return "since it leans on the ground beside it";
     switch (f->restraint) {
     case KENT_THRUST_BLOCK:
@@ -359,6 +360,7 @@ static void add_fitting_and_ground(const plan *p, const kent_fitting *f, kent_te
         add_ground(p, f, out);
         add_restraint(p, f, out);
     }
+    kent_view_add_stated(p->view, f, out);
     add_obstacles(p, f, out);
 }
 

@@ -494,6 +494,11 @@ void kent_holding_refuse(kent_holding_work *w, kent_holding *h)
 
     if (h->soil_beside) {
         refuse_curve(w, h, &t);
+    } else if (h->chosen == KENT_NO_RESTRAINT && w->fitting->role == KENT_ROLE_WALL) {
+        kent_text_add(&t,
+                      "the structure that the main is built into has to hold %s: it is "
+                      "not designed here",
+                      kent_said_of(KENT_FORCE, w->m->units, h->design_thrust).s);
     } else if (h->chosen == KENT_NO_RESTRAINT) {
         kent_text_add(&t, "restraint \"none\" is asked for: nothing holds %s",
                       kent_said_of(KENT_FORCE, w->m->units, h->design_thrust).s);

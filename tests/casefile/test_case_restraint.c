@@ -86,6 +86,103 @@ static void a_trench_is_filled_with_what_is_said_of_it(void **state)
     kent_catalogue_free(c);
 }
 
+/* ---- fittings -------------------------------------------------------------------- */
+
+#define AT_B1 "{ at = \"B1\";"
+
+static void a_fitting_has_what_is_stated_for_its_restraint(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m =
+        with(c, AT_B1,
+             AT_B1
+             " restraint = \"block-and-joints\"; block_share = 0.4; reason = \"bank of "
+             "the canal\"; backing = \"compacted-fill\"; contact_area = \"0.12 m^2\"; "
+             "ground_slope = { direction = [ 0.0, -2.0, 9.0 ]; angle = \"12 deg\"; };");
+    const kent_stated *s = &m->fittings[kent_model_fitting_of(m, "B1")].stated;
+    assert_close(s->block_share, 0.4, 1e-15);
+    assert_string_equal(s->reason, "bank of the canal");
+    assert_int_equal(s->backing, KENT_BACKING_FILL);
+    assert_close(s->contact_area, 0.12, 1e-12);
+    assert_close(s->slope.angle, 12.0 * DEGREE, 1e-12);
+    assert_close(s->slope.direction.y, -1.0, 1e-15);
+    assert_close(s->slope.direction.z, 0.0, 1e-15);
+    assert_false(s->closes_stated);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+#define TEE_PIPE "pipes = ( { id = \"A\";"
+#define TEE                                                                            \
+    "pipes = ( { id = \"C\"; route = [ \"T1\", \"X1\" ]; pipe_class = "                \
+    "\"DI-EN545-C40-DN100\"; }, { id = \"A\";"
+
+/* DESIGN_CASE with a branch at T1 and a note on it; the caller frees. */
+static char *branched(const char *keys)
+{
+    char note[500];
+    char *out = replaced(DESIGN_CASE, TEE_PIPE, TEE);
+    char *more = replaced(out, "  { id = \"E1\";",
+                          "  { id = \"X1\"; x = \"200 m\"; y = \"90 m\"; z = \"40 m\"; "
+                          "},\n  { id = \"E1\";");
+    free(out);
+    (void)snprintf(note, sizeof note, "{ at = \"T1\"; %s }, " AT_B1, keys);
+    out = replaced(more, AT_B1, note);
+    free(more);
+    return out;
+}
+
+static void a_tee_has_its_run_and_the_legs_that_can_be_shut(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text =
+        branched("run_restrained = ( ( \"B1\", \"12 m\" ), ( \"R1\", \"20 ft\" ) "
+                 "); can_close = [ \"X1\" ];");
+    kent_model *m = read_sound(c, text);
+    const kent_fitting *f = &m->fittings[kent_model_fitting_of(m, "T1")];
+    const kent_port *ports = &m->ports[f->port_first];
+    assert_string_equal(m->points[ports[0].toward].id, "R1");
+    assert_close(f->stated.run_length[0], 20.0 * 0.3048, 1e-12);
+    assert_close(f->stated.run_length[1], 12.0, 1e-15);
+    assert_true(f->stated.closes_stated);
+    assert_int_equal(f->stated.closes_count, 1);
+    assert_string_equal(m->points[m->closes[f->stated.closes_first]].id, "X1");
+    kent_model_free(m);
+    free(text);
+    text = branched("can_close = [ ];");
+    m = read_sound(c, text);
+    f = &m->fittings[kent_model_fitting_of(m, "T1")];
+    assert_true(f->stated.closes_stated);
+    assert_int_equal(f->stated.closes_count, 0);
+    kent_model_free(m);
+    free(text);
+    kent_catalogue_free(c);
+}
+
+static void pieces_in_line_are_types_of_a_case(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *type;
+        kent_role role;
+    } ROWS[] = {{"wall-piece", KENT_ROLE_WALL},
+                {"flange-adaptor", KENT_ROLE_FLANGE_ADAPTOR}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < 2; i++) {
+        char piece[100];
+        (void)snprintf(piece, sizeof piece, "{ at = \"T1\"; type = \"%s\"; }, " AT_B1,
+                       ROWS[i].type);
+        kent_model *m = with(c, AT_B1, piece);
+        const kent_fitting *f = &m->fittings[kent_model_fitting_of(m, "T1")];
+        assert_int_equal(f->type, KENT_STRAIGHT);
+        assert_int_equal(f->role, ROWS[i].role);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
 /* ---- the project ----------------------------------------------------------------- */
 
 static void a_project_has_a_utility_and_a_date(void **state)
@@ -107,6 +204,9 @@ int main(void)
         cmocka_unit_test(what_is_no_natural_ground_is_not_relied_on_unasked),
         cmocka_unit_test(a_base_is_held_by_friction_or_by_adhesion),
         cmocka_unit_test(a_trench_is_filled_with_what_is_said_of_it),
+        cmocka_unit_test(a_fitting_has_what_is_stated_for_its_restraint),
+        cmocka_unit_test(a_tee_has_its_run_and_the_legs_that_can_be_shut),
+        cmocka_unit_test(pieces_in_line_are_types_of_a_case),
         cmocka_unit_test(a_project_has_a_utility_and_a_date),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -102,6 +102,7 @@ static void words_stand_in_the_order_of_the_models_enumerations(void **state)
     WORDS_AGREE("branch", "joint", 6, kent_joint_word, kent_joint);
     WORDS_AGREE("ground", "trench", KENT_TRENCHES, kent_trench_word, int);
     WORDS_AGREE("fitting", "orientation", 3, kent_orientation_word, kent_orientation);
+    WORDS_AGREE("fitting", "backing", 2, kent_backing_word, kent_backing);
     WORDS_AGREE("soil", "nature", 6, kent_nature_word, kent_nature);
     WORDS_AGREE("design_rules", "blocks", 4, kent_block_policy_word, kent_block_policy);
     WORDS_AGREE("design_rules", "vertical_blocks", 4, kent_block_policy_word,

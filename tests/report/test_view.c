@@ -249,6 +249,39 @@ static void every_route_of_bearing_is_told_with_its_numbers(void **state)
     kent_build_clear(&b);
 }
 
+static void what_is_stated_for_a_restraint_is_told(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    kent_build_derive(&b);
+    size_t bend = 0;
+    while (b.model->fittings[bend].type != KENT_BEND) {
+        bend++;
+    }
+    int next = b.model->ports[b.model->fittings[bend].port_first].toward;
+    kent_stated *s = &b.model->fittings[bend].stated;
+    s->slope = (kent_slope){{0.0, -1.0, 0.0}, acos(-1.0) / 18.0};
+    s->backing = KENT_BACKING_FILL;
+    s->block_share = 0.4;
+    s->contact_area = 0.12;
+    s->run_length[0] = 12.0;
+    s->closes_stated = true;
+    (void)snprintf(s->reason, sizeof s->reason, "bank of the canal");
+    assert_says(&b, KENT_SI, "The ground falls by 10.0° towards 180°.");
+    assert_says(&b, KENT_SI, "A block stands against compacted fill.");
+    assert_says(&b, KENT_SI, "The block takes 0.40 of the thrust, joints the rest.");
+    assert_says(&b, KENT_SI, "It presses on its block over 0.120 m².");
+    assert_says(&b, KENT_SI, "Its run is restrained for 12.00 m towards");
+    assert_says(&b, KENT_SI, "None of its legs can be shut.");
+    assert_says(&b, KENT_SI, "Reason: bank of the canal.");
+    b.model->closes = &next;
+    b.model->closes_count = s->closes_count = 1;
+    assert_says(&b, KENT_SI, "Legs that can be shut: towards ");
+    b.model->closes = NULL;
+    b.model->closes_count = 0;
+    kent_build_clear(&b);
+}
+
 /* ---- pipes ----------------------------------------------------------------------- */
 
 /* c1 = 2 e/D (1 + mu) + D/(D + e): 2 x 10/300 x 1.28 + 300/310 = 1.053. */
@@ -484,6 +517,7 @@ int main(void)
         cmocka_unit_test(what_was_not_stated_is_said),
         cmocka_unit_test(a_restraint_says_why),
         cmocka_unit_test(every_route_of_bearing_is_told_with_its_numbers),
+        cmocka_unit_test(what_is_stated_for_a_restraint_is_told),
         cmocka_unit_test(a_wave_speed_says_its_form_and_its_numbers),
         cmocka_unit_test(a_given_wave_speed_stands_beside_what_the_wall_makes),
         cmocka_unit_test(alike_pipes_are_told_as_one),

@@ -366,6 +366,21 @@ static void no_restraint_on_purpose_is_said_but_not_counted(void **state)
     finish(&b, r);
 }
 
+static void what_a_wall_piece_is_pushed_its_structure_has_to_hold(void **state)
+{
+    (void)state;
+    kent_build b = main_of_five();
+    const int note = kent_build_note(&b, "C");
+    b.model->notes[note].role = KENT_ROLE_WALL;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, TEST, 1);
+    const kent_holding *h = holding_of(&b, r, "C");
+
+    assert_false(h->held);
+    kent_hand_expect(h, "the structure that the main is built into has to hold");
+    finish(&b, r);
+}
+
 /* ---- refusals -------------------------------------------------------------------- */
 
 static void
@@ -824,6 +839,7 @@ int main(void)
         cmocka_unit_test(a_turn_that_the_joint_takes_is_listed_and_not_held),
         cmocka_unit_test(a_thrust_of_less_than_half_a_kilonewton_needs_nothing),
         cmocka_unit_test(no_restraint_on_purpose_is_said_but_not_counted),
+        cmocka_unit_test(what_a_wall_piece_is_pushed_its_structure_has_to_hold),
         cmocka_unit_test(
             without_soil_or_cover_there_is_no_block_and_it_says_what_to_give),
         cmocka_unit_test(less_than_the_least_cover_is_refused),
