@@ -206,7 +206,8 @@ static void words_become_what_they_say(void **state)
         [KENT_THRUST_BLOCK] = "thrust-block",
         [KENT_ANCHOR_BLOCK] = "anchor-block",
         [KENT_RESTRAINED_JOINTS] = "restrained-joints",
-        [KENT_BLOCK_AND_JOINTS] = "block-and-joints",
+        [KENT_BLOCK_AND_JOINTS] =
+            "block-and-joints\"; block_share = 0.5; reason = \"both",
         [KENT_NO_RESTRAINT] = "none"};
     kent_catalogue *c = read_catalogue();
 
@@ -232,7 +233,7 @@ static void words_become_what_they_say(void **state)
         assert_int_equal(m->solver.friction, i);
         kent_model_free(m);
     }
-    for (int i = 0; i < 4; i++) {
+    for (int i = 0; i < 5; i++) {
         kent_model *m = read_worded(
             c, "ground =",
             "fittings = ( { at = \"B1\"; restraint = \"%s\"; } );\nground =",
