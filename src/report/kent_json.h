@@ -53,6 +53,9 @@ void kent_json_put_limits(kent_writer *w);
 json_t *kent_json_concrete(const kent_concrete_check *c);
 json_t *kent_json_quantities(const kent_quantities *q);
 
+/* A list: systems of restrained lengths. */
+void kent_json_put_systems(kent_writer *w);
+
 /* The restrained lengths of one fitting: a list, empty where none can be given. */
 json_t *kent_json_legs(const kent_model *m, const kent_fitting *f,
                        const kent_holding *h);

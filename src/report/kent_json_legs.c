@@ -29,6 +29,7 @@ static json_t *leg_of(const kent_model *m, const kent_fitting *f, const kent_leg
     kent_object_set(&o, "ends_in", kent_json_words(kent_leg_end_word(leg->end)));
     kent_object_set(&o, "ends_at",
                     end >= 0 ? kent_json_words(m->points[end].id) : json_null());
+    kent_object_set(&o, "lengthened", json_boolean(leg->lengthened));
     kent_object_set(&o, "structure_pull_N", kent_json_real(leg->structure_pull));
     return kent_object_done(o);
 }

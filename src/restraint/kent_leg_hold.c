@@ -232,29 +232,21 @@ static void note_end(kent_holding_work *w, const kent_leg_walk *walk, double len
     }
 }
 
-kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
+kent_leg_walk kent_leg_lay(const kent_model *m, const kent_standings *standings,
+                           size_t fitting, size_t port, const kent_leg_work *work,
+                           kent_leg *leg)
 {
-    const kent_port *p = &w->m->ports[w->fitting->port_first + port];
-    const kent_leg_walk laid =
-        kent_leg_walk_of(w->m, w->standings, w->index, p, work->length, work->own);
-    double length = 0.0;
-    const int pipes = kent_leg_whole(w->m, &laid, &length);
-    const bool whole = laid.end == KENT_LEG_IN_GROUND && pipes > 0;
-    const kent_leg_walk walk =
-        whole ? kent_leg_walk_of(w->m, w->standings, w->index, p, length, work->own)
-              : laid;
+    const kent_port *p = &m->ports[m->fittings[fitting].port_first + port];
     const double pull = work->factor * work->force;
-    const bool anchored = walk.end == KENT_LEG_AT_STRUCTURE;
+    double length = 0.0;
+    kent_leg_walk walk =
+        kent_leg_walk_of(m, standings, fitting, p, work->length, work->own);
+    const int pipes = kent_leg_whole(m, &walk, &length);
 
-    for (size_t i = 0; i < work->piece_count; i++) {
-        note_piece(w, work, &work->piece[i]);
+    if (walk.end == KENT_LEG_IN_GROUND && pipes > 0) {
+        walk = kent_leg_walk_of(m, standings, fitting, p, length, work->own);
     }
-    note_run(w, work);
-    note_forms(w, work);
-    note_reducer(w, p);
-    note_passed(w, &walk);
-    note_end(w, &walk, whole ? length : work->length, pull);
-    return (kent_leg){
+    *leg = (kent_leg){
         .port = port,
         .length = work->length,
         .pipes = pipes,
@@ -269,6 +261,25 @@ kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *wor
         .end = walk.end,
         .end_point = walk.point,
         .reach = walk.reach,
-        .structure_pull = anchored ? pull : 0.0,
+        .structure_pull = walk.end == KENT_LEG_AT_STRUCTURE ? pull : 0.0,
     };
+    return walk;
+}
+
+kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work)
+{
+    const kent_port *p = &w->m->ports[w->fitting->port_first + port];
+    kent_leg leg;
+    const kent_leg_walk walk =
+        kent_leg_lay(w->m, w->standings, w->index, port, work, &leg);
+
+    for (size_t i = 0; i < work->piece_count; i++) {
+        note_piece(w, work, &work->piece[i]);
+    }
+    note_run(w, work);
+    note_forms(w, work);
+    note_reducer(w, p);
+    note_passed(w, &walk);
+    note_end(w, &walk, work->length, leg.factor * leg.pull);
+    return leg;
 }

@@ -171,6 +171,11 @@ bool kent_leg_end_fits(kent_leg_end end);
  * of the last pipe. Returns 0 where some pipe length is not known. */
 int kent_leg_whole(const kent_model *m, const kent_leg_walk *walk, double *length);
 
+/* A worked-out leg in whole pipes, and where it leads. */
+kent_leg_walk kent_leg_lay(const kent_model *m, const kent_standings *standings,
+                           size_t fitting, size_t port, const kent_leg_work *work,
+                           kent_leg *leg);
+
 /* Where ground that counts begins along a pipe. */
 typedef struct kent_sound {
     double distance;       /* m, or to the end of the pipe where there is none */

@@ -1,6 +1,7 @@
 #include "kent_restraint.h"
 #include "kent_concrete_internal.h"
 #include "kent_space_internal.h"
+#include "kent_system_internal.h"
 
 #include <assert.h>
 #include <stdlib.h>
@@ -135,6 +136,8 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
             r->not_held++;
         }
     }
+    status = kent_systems_find(m, &standings, r, err);
+    if (status != KENT_OK) goto done;
     status = kent_space_find(m, r, err);
     if (status != KENT_OK) goto done;
     kent_blocks_advise(r);
@@ -159,6 +162,7 @@ void kent_restraints_free(kent_restraints *r)
         kent_derivation_clear(&r->fittings[i].derivation);
     }
     kent_space_clear(&r->space);
+    kent_systems_clear(&r->systems);
     kent_notes_clear(&r->cautions);
     free(r->fittings);
     free(r);

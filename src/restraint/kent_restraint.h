@@ -133,6 +133,7 @@ typedef struct kent_leg { /* restrained length of one port */
     kent_leg_end end;
     int end_point;         /* where; -1: in plain pipe */
     double reach;          /* m of it restrained: whole pipes, or up to what ends it */
+    bool lengthened;       /* by the system that it leads out of (22) */
     double structure_pull; /* N, factored, that a structure takes at its end; else 0 */
 } kent_leg;
 

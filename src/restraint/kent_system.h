@@ -17,10 +17,13 @@ typedef struct kent_stretch {
     int joints;                      /* 0: the length of one pipe is not known */
 } kent_stretch;
 
-/* What a leg runs to beyond its own length, because its fitting is part of a system. */
+/* A leg that leads out of a system. */
 typedef struct kent_outer {
-    size_t fitting, port; /* whose leg leads out of the system */
-    double length;        /* m, by the whole system's turn (22.2) or end (22.3) */
+    size_t fitting, port; /* whose leg it is */
+    double length;        /* m; by the whole system's turn (22.2) or end (22.3) where
+                             that asks for more than its own fitting */
+    double needed, given; /* N, factored, that it must make up, and that the ground
+                             gives along it */
     bool fits;
 } kent_outer;
 
@@ -30,12 +33,10 @@ typedef struct kent_system_of {
     size_t outer_first, outer_count;     /* into kent_systems.outers */
     double length;                       /* m, of all stretches */
     int joints; /* of all stretches; 0: the length of one pipe is not known somewhere */
-    double needed, given; /* N, factored: what the legs that lead out of it must make
-                             up, and what the ground along all its stretches gives, each
-                             metre once; NAN: not known */
+    double needed, given; /* N, factored, of all legs that lead out of it */
     bool fits;            /* every leg of it does */
     bool across;     /* a length runs on past a turn of nearly a right angle (22.4) */
-    bool offset;     /* a crest and a sag next to each other (22.5) */
+    bool offset;     /* a crest and a sag next to each other */
     bool lengthened; /* a leg out of it runs further than its own fitting asks */
 } kent_system_of;
 

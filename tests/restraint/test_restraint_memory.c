@@ -109,6 +109,45 @@ static void nothing_leaks_of_what_is_said_of_ground_and_obstacles(void **state)
     kent_build_clear(&b);
 }
 
+/* Two bends whose lengths meet, and whose legs out the system makes longer. */
+static void nothing_leaks_of_systems(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6}};
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "B", 100.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "C", 102.0, 2.0, 50.0);
+    (void)kent_build_point(&b, "D", 102.0, 100.0, 50.0);
+    const int p = kent_build_pipe(&b, "P", "A B C D", 0.4, 1000.0);
+    b.model->pipes[p].material_density = 7050.0;
+    b.model->pipes[p].laying_length = 6.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_outflow(&b, "D", 0.0);
+    (void)kent_build_soil(&b, "till", 100e3, 19e3, 1.2);
+    kent_soil *till = &b.model->soils[0];
+    till->friction_angle = 0.5;
+    till->cohesion = 0.0;
+    till->friction_ratio = till->passive_ratio = 0.6;
+    b.model->ground.water_table = (double)INFINITY;
+    for (int i = 0; i < 2; i++) {
+        const int note = kent_build_note(&b, i == 0 ? "B" : "C");
+        b.model->notes[note].restraint = KENT_RESTRAINED_JOINTS;
+        b.model->notes[note].apart = true;
+    }
+    kent_build_derive(&b);
+    kent_loads_result loads = kent_hand_loads(b.model, cases, 1);
+    job j = {b.model, &loads};
+
+    kent_restraints *r = kent_hand_size(&b, cases, 1);
+    assert_int_equal(r->systems.count, 1);
+    assert_true(r->systems.at[0].lengthened);
+    kent_restraints_free(r);
+    assert_true(kent_allocations_needed(size_once, &j) > 20);
+    kent_hand_clear(&loads);
+    kent_build_clear(&b);
+}
+
 static void freeing_nothing_is_safe(void **state)
 {
     (void)state;
@@ -120,6 +159,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(any_allocation_may_fail_and_nothing_leaks),
         cmocka_unit_test(nothing_leaks_of_what_is_said_of_ground_and_obstacles),
+        cmocka_unit_test(nothing_leaks_of_systems),
         cmocka_unit_test(freeing_nothing_is_safe),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
