@@ -200,6 +200,23 @@ static void what_is_lifted_presses_on_nothing(void **state)
     let_go(&x);
 }
 
+/* Suction pulls the same crest down: on the concrete below the pipe, half of what the
+ * block is taller by. */
+static void a_weight_that_is_pulled_down_is_pressed_below_the_pipe(void **state)
+{
+    (void)state;
+    static const kent_hand_case BOTH[] = {{"test", KENT_CASE_TEST, 1.5, 0.6e6},
+                                          {"shut", KENT_CASE_OCCASIONAL, 1.5, -0.09e6}};
+    held x = hold(main_that_turns(0.0, 200.0 * tan(5.625 * DEGREE)), BOTH, 2);
+    const kent_concrete_check *c = &x.h->concrete;
+    assert_int_equal(x.h->block.type, KENT_BLOCK_GRAVITY);
+    assert_int_equal(c->sense, KENT_DOWNWARD);
+    assert_close(c->load, 0.09 * 1.5 * thrust_of(11.25 * DEGREE), 1e-6);
+    assert_close(c->behind, 0.5 * (x.h->block.height - 0.62), 1e-12);
+    assert_close(c->into.height, x.h->block.thickness, 1e-12);
+    let_go(&x);
+}
+
 static void a_sag_presses_down_on_its_base(void **state)
 {
     (void)state;
@@ -652,6 +669,7 @@ int main(void)
         cmocka_unit_test(the_help_a_crushed_block_is_offered_helps),
         cmocka_unit_test(too_much_on_an_assumed_contact_is_a_caution),
         cmocka_unit_test(what_is_lifted_presses_on_nothing),
+        cmocka_unit_test(a_weight_that_is_pulled_down_is_pressed_below_the_pipe),
         cmocka_unit_test(a_sag_presses_down_on_its_base),
         cmocka_unit_test(sideways_and_down_on_one_body_add),
         cmocka_unit_test(a_pipe_that_passes_through_is_told_what_ring_would_do),
