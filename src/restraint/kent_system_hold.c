@@ -249,6 +249,20 @@ static bool lengthen(const kent_system_work *w, const kent_system_leg *out,
     return true;
 }
 
+/* Bends alone between two ways out. */
+static bool is_turn(const system_view *v)
+{
+    return v->outs == 2 && v->ends == 0 && v->others == 0 &&
+           v->out[0]->fitting != v->out[1]->fitting;
+}
+
+/* An end behind bends, with one way out. */
+static bool is_ended(const system_view *v)
+{
+    return v->outs == 1 && v->ends == 1 && v->others == 0 && v->bends > 0 &&
+           v->end != v->out[0];
+}
+
 bool kent_system_lengthen(kent_system_work *w)
 {
     bool longer = false;
@@ -256,10 +270,7 @@ bool kent_system_lengthen(kent_system_work *w)
     for (size_t i = 0; i < w->leg_count;) {
         const size_t count = kent_system_legs(w, i);
         const system_view v = view_of(w, &w->legs[i], count);
-        const bool turn = v.outs == 2 && v.ends == 0 && v.others == 0 &&
-                          v.out[0]->fitting != v.out[1]->fitting;
-        const bool end = v.outs == 1 && v.ends == 1 && v.others == 0 && v.bends > 0 &&
-                         v.end != v.out[0];
+        const bool turn = is_turn(&v), end = is_ended(&v);
         for (size_t k = 0; k < v.outs && k < 2; k++) {
             system_ask ask;
             if (turn ? ask_of_turn(w, &v, v.out[k], &ask)
@@ -364,7 +375,8 @@ static void stretches_of(const kent_system_work *w, const kent_system_of *system
 }
 
 /* Said once, at the first of its fittings. */
-static bool tell_system(const kent_system_work *w, const kent_system_of *system)
+static bool tell_system(const kent_system_work *w, const kent_system_of *system,
+                        const system_view *v)
 {
     const size_t first = w->r->systems.fittings[system->fitting_first];
     kent_notes *notes = &w->r->fittings[first].cautions;
@@ -386,6 +398,12 @@ static bool tell_system(const kent_system_work *w, const kent_system_of *system)
     if (!system->fits) {
         kent_notes_add(notes, "not every leg of that system fits: it holds only once "
                               "what breaks it is tied across or held by itself");
+    }
+    if (!is_turn(v) && !is_ended(v)) {
+        kent_notes_add(notes,
+                       "the pushes of that system are not added up: each leg of "
+                       "it runs as far as its own fitting asks, and whether that "
+                       "holds them together is not judged");
     }
     const bool lost = names.failed || where.failed || notes->failed;
     kent_text_clear(&names);
@@ -465,7 +483,8 @@ bool kent_system_tell(kent_system_work *w)
             }
             told = tell_longer(w, &w->legs[k]) && told;
         }
-        told = tell_system(w, of) && told;
+        const system_view v = view_of(w, &w->legs[i], count);
+        told = tell_system(w, of, &v) && told;
         i += count;
     }
     return told;

@@ -13,7 +13,7 @@ static const kent_hand_case TEST[] = {{"test", KENT_CASE_TEST, 1.5, 1.0e6}};
 static void ask_for(kent_build *b, const char *at, kent_restraint_choice choice)
 {
     const int note = kent_build_note(b, at);
-    b->model->notes[note].restraint = choice;
+    b->model->notes[note].restraint = (int)choice;
 }
 
 /* A, then B and C `apart` (m) with turns (rad), then E, 200 m on; restrained joints at
@@ -261,6 +261,28 @@ static void a_system_that_does_not_fit_is_not_held(void **state)
     finish(&b, r);
 }
 
+/* A tee 3 m from a bend, its run restrained over 4 m: what they push with together has
+ * no form here. */
+static void pushes_that_are_not_added_up_are_said(void **state)
+{
+    (void)state;
+    for (int tee = 0; tee < 2; tee++) {
+        kent_build b = chain(tee ? 0.0 : 22.5 * DEGREE, 22.5 * DEGREE, 3.0, false);
+        if (tee) {
+            (void)kent_build_point(&b, "S", 0.0, -100.0, 50.0);
+            const int q = kent_build_pipe(&b, "Q", "B S", 0.2, 1000.0);
+            b.model->pipes[q].material_density = 7050.0;
+            b.model->notes[0].stated.run_length[0] = 4.0;
+            b.model->notes[0].stated.run_length[1] = 4.0;
+        }
+        kent_restraints *r = sized(&b);
+        assert_int_equal(r->systems.count, 1);
+        assert_int_equal(r->systems.at[0].fitting_count, 2);
+        assert_int_equal(says_in_all(r, "of that system are not added up"), tee);
+        finish(&b, r);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -272,6 +294,7 @@ int main(void)
         cmocka_unit_test(a_length_past_a_right_angle_is_flagged),
         cmocka_unit_test(a_dead_end_behind_a_bend_draws_the_leg_beyond),
         cmocka_unit_test(a_system_that_does_not_fit_is_not_held),
+        cmocka_unit_test(pushes_that_are_not_added_up_are_said),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
