@@ -34,6 +34,7 @@ void kent_fill_head(kent_filling *f, const char *path)
     kent_record_copy(&project, "designer", NULL, p->designer, sizeof p->designer);
     kent_record_copy(&project, "checker", NULL, p->checker, sizeof p->checker);
     kent_record_copy(&project, "utility", NULL, p->utility, sizeof p->utility);
+    kent_record_copy(&project, "codes", NULL, p->codes, sizeof p->codes);
     kent_record_copy(&project, "date", NULL, p->date, sizeof p->date);
 }
 

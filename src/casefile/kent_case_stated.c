@@ -125,6 +125,7 @@ void kent_fill_stated(kent_filling *f, kent_record *record, kent_fitting_note *n
     s->block_share = kent_record_number(record, "block_share");
     s->contact_area = kent_record_number(record, "contact_area");
     kent_record_copy(record, "reason", NULL, s->reason, sizeof s->reason);
+    kent_record_copy(record, "sheet", NULL, s->sheet, sizeof s->sheet);
     if (kent_record_has(record, "run_restrained")) fill_runs(f, record, n);
     fill_closes(f, record, n);
     if (record->sound) check_share(f, record, n);

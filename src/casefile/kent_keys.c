@@ -255,6 +255,8 @@ const kent_key KENT_KEYS[] = {
     TEXT("project", "designer", 63, "none", "who designed"),
     TEXT("project", "checker", 63, "none", "who checked"),
     TEXT("project", "utility", 63, "none", "whose main it is"),
+    TEXT("project", "codes", 239, "none",
+         "standards, with editions, that prevail here; printed, not checked"),
     TEXT("project", "date", 31, "none", "date of the design"),
 
     QUANTITY("water", "temperature", KENT_TEMPERATURE, WITHIN(273.15, 373.15),
@@ -504,6 +506,7 @@ const kent_key KENT_KEYS[] = {
     LIST("fitting", "can_close", "", "of a cross or wye every leg, else none",
          "next points of the legs that can be shut"),
     TEXT("fitting", "reason", 159, "none", "why it is restrained as it is"),
+    TEXT("fitting", "sheet", 31, "none", "sheet of the drawings that shows it"),
 
     VECTOR("ground_slope", "direction", "required", "downhill: east, north, up"),
     QUANTITY("ground_slope", "angle", KENT_ANGLE, WITHIN(0.0, 1.5707963267948966),

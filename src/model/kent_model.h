@@ -718,6 +718,7 @@ typedef struct kent_stated {
     size_t closes_first, closes_count; /* into kent_model.closes: the next points of
                                           legs that can be shut; */
     bool closes_stated;                /* else all legs of a cross or wye can */
+    char sheet[32];                    /* of the drawings that shows it; may be empty */
     char reason[160]; /* for its restraint being as it is; may be empty */
 } kent_stated;
 
@@ -877,6 +878,7 @@ typedef struct kent_march {
 typedef struct kent_project {
     char number[64], drawing[64], revision[64], designer[64], checker[64];
     char utility[64], date[32];
+    char codes[240]; /* standards, with editions, that the user holds to */
 } kent_project;
 
 typedef struct kent_model {

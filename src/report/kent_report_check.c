@@ -18,7 +18,8 @@ static void say_project(const kent_view *v)
                 {"revision", p->revision},
                 {"designed by", p->designer},
                 {"checked by", p->checker},
-                {"date", p->date}};
+                {"date", p->date},
+                {"held to", p->codes}};
     kent_text words = {0};
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
         if (rows[i].value[0] == '\0') continue;

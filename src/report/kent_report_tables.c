@@ -537,6 +537,14 @@ static void print_end(kent_page *page)
     kent_text words = {0};
     kent_text_add(page->out, "\n");
     kent_table_paragraph(page->out, page->limit, "", KENT_PAGE_JUDGE);
+    if (m->project.codes[0] != '\0') {
+        kent_text_add(&words,
+                      "The case names as prevailing: %s. Nothing here says that any of "
+                      "them is met.",
+                      m->project.codes);
+        kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+        kent_text_reset(&words);
+    }
     kent_text_add(&words, "kentledge %s", KENT_VERSION);
     if (m->file_count > 0) {
         kent_text_add(&words, " · %s · checksum %016llx", m->files[0], m->checksum);

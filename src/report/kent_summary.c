@@ -187,6 +187,13 @@ static void orientation(const kent_row *r, kent_text *out)
     kent_text_add(out, "%s", kent_orientation_word(r->fitting->orientation));
 }
 
+/* Of the drawings: its own, else the project's. */
+static void sheet(const kent_row *r, kent_text *out)
+{
+    const char *own = r->fitting->stated.sheet;
+    kent_text_add(out, "%s", own[0] != '\0' ? own : r->model->project.drawing);
+}
+
 static void role(const kent_row *r, kent_text *out)
 {
     kent_text_add(out, "%s", kent_role_word(r->fitting->role));
@@ -376,6 +383,7 @@ static const kent_summary_column COLUMNS[] = {
     {"face volume", face_volume, NULL, KENT_VOLUME, 0},
     {"restrained length", joints, NULL, KENT_LENGTH, 0},
     {"cautions", NULL, cautions, KENT_RATIO, NARROW},
+    {"sheet", NULL, sheet, KENT_RATIO, 0},
     {"role", NULL, role, KENT_RATIO, 0},
     {"branch end", NULL, branch_end, KENT_RATIO, 0},
     {"members", NULL, members, KENT_RATIO, 0},

@@ -297,6 +297,19 @@ class App(unittest.TestCase):
         other = self.call("run", "main.cfg", "--format=csv", "--no-files", env=env)
         self.assertEqual(plain.stdout, other.stdout)
 
+    def test_the_codes_named_are_printed_and_nothing_is_said_to_meet_them(self):
+        named = CASE.replace("points = (", 'project = { drawing = "W-7"; codes = "EN 805:2000; '
+                             'AWWA M41, 3rd edition"; };\npoints = (', 1).replace(
+            'cover = "1.6 m"; };', 'cover = "1.6 m"; };\n'
+            'fittings = ( { at = "PI1"; sheet = "W-8/2"; } );')
+        (self.dir / "main.cfg").write_text(named)
+        table = " ".join(self.call("run", "main.cfg", "--no-files").stdout.split())
+        self.assertIn("The case names as prevailing: EN 805:2000; AWWA M41, 3rd edition. "
+                      "Nothing here says that any of them is met.", table)
+        self.assertEqual([row["sheet"] for _, row in self.listed()], ["W-8/2", "W-7"])
+        (self.dir / "main.cfg").write_text(CASE)
+        self.assertNotIn("prevailing", self.call("run", "main.cfg", "--no-files").stdout)
+
     def listed(self, *args):
         r = self.call("run", "main.cfg", "--format", "csv", *args)
         self.assertEqual((r.returncode, r.stderr.count("error")), (0, 0))
