@@ -51,6 +51,16 @@ double kent_gravity_volume(double upward, double factor, double unit_weight)
 
 /* ---- parts ----------------------------------------------------------------------- */
 
+/* A face no lower than the rules want it over this pipe. */
+static bool face_fits(const kent_rules *rules, const kent_site *site, double area,
+                      double limit, kent_face *out)
+{
+    kent_rules own = *rules;
+
+    own.least_height = kent_rules_height(rules, site->diameter);
+    return kent_face_choose(&own, area, limit, out);
+}
+
 static kent_fault face_size(const kent_rules *rules, const kent_site *site,
                             double sideways, kent_block *out)
 {
@@ -62,7 +72,7 @@ static kent_fault face_size(const kent_rules *rules, const kent_site *site,
         return KENT_FAULT_SHALLOW;
     }
     if (!(site->allowable > 0.0)) return KENT_FAULT_BEARING;
-    if (!kent_face_choose(rules, out->bearing_area + site->hole, limit, &out->face)) {
+    if (!face_fits(rules, site, out->bearing_area + site->hole, limit, &out->face)) {
         return KENT_FAULT_FACE;
     }
     out->face_thickness = kent_site_thickness(rules, site, out->face, KENT_SIDEWAYS);
@@ -88,7 +98,7 @@ double kent_face_cover_needed(const kent_rules *rules, const kent_site *site,
         const double least = kent_rules_cover(rules, deeper.diameter);
         if (deeper.cover < least - COVER_SLACK) continue;
         if (!(deeper.allowable > 0.0)) continue;
-        if (kent_face_choose(rules, area, limit, &face)) return deeper.cover;
+        if (face_fits(rules, &deeper, area, limit, &face)) return deeper.cover;
     }
     return NAN;
 }
@@ -102,7 +112,9 @@ double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
     const double width = kent_side_down(rules->width_to_height[1] * height, step);
     const double net = width * height - site->hole;
 
-    if (!(height >= rules->least_height - KENT_SIDE_SLACK * step)) return NAN;
+    const double least = kent_rules_height(rules, site->diameter);
+
+    if (!(height >= least - KENT_SIDE_SLACK * step)) return NAN;
     return net > 0.0 ? sideways / net : NAN;
 }
 

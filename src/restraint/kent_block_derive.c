@@ -76,6 +76,13 @@ static void derive_sides(const kent_holding_work *w, kent_holding *h)
     rule(d, "hd", r->height_to_depth, KENT_RATIO, "height over depth of base, at most");
     kent_derivation_work(d, "hmax", kent_face_height_limit(r, axis), KENT_LENGTH,
                          "hd*axis/(1 - hd/2)", "10.3", "greatest height of the face");
+    if (r->height_over_diameter > 0.0) {
+        rule(d, "ho", r->height_over_diameter, KENT_LENGTH,
+             "height over the pipe's diameter, at least");
+        kent_derivation_work(d, "hleast", w->site.diameter + r->height_over_diameter,
+                             KENT_LENGTH, "OD + ho", "21.12",
+                             "least height for this pipe");
+    }
     rule(d, "rw", r->width_to_height[0], KENT_RATIO, "width over height, at least");
     rule(d, "rx", r->width_to_height[1], KENT_RATIO, "width over height, at most");
     kent_derivation_put(d, "h", face->height, KENT_LENGTH, KENT_COMPUTED,

@@ -61,6 +61,9 @@ double kent_site_axis(const kent_site *site); /* m below ground */
 /* m: the least cover that the rules want over a pipe of a diameter (m). */
 double kent_rules_cover(const kent_rules *rules, double diameter);
 
+/* m: the least height of a face behind such a pipe. */
+double kent_rules_height(const kent_rules *rules, double diameter);
+
 /* Where a face centred on the pipe stands. */
 kent_bearing_place kent_site_place(const kent_site *site, const kent_rules *rules);
 

@@ -149,6 +149,7 @@ static const char *nature_way_out(kent_nature nature)
 
 static void refuse_soil(const kent_holding_work *w, kent_text *t)
 {
+    if (!w->soil) return; /* another fault */
     const kent_nature nature = w->soil->nature;
 
     kent_text_add(t, "the soil here, '%s',%s gives no restraint: ", w->soil->id,

@@ -26,6 +26,14 @@ double kent_rules_cover(const kent_rules *rules, double diameter)
                  : rules->least_cover;
 }
 
+/* source docs/theory/21-ground.md, 21.12 */
+double kent_rules_height(const kent_rules *rules, double diameter)
+{
+    const double over = rules->height_over_diameter;
+    return over > 0.0 ? fmax(rules->least_height, diameter + over)
+                      : rules->least_height;
+}
+
 void kent_site_bear(kent_site *site, const kent_rules *rules)
 {
     const kent_bearing_place at = kent_site_place(site, rules);

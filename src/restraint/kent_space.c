@@ -324,8 +324,9 @@ static void meet_mains(finder *f)
                                (b.x - a.x) / length,
                                (b.y - a.y) / length,
                                length};
-            for (double at = 0.0; at < length; at += 0.5 * f->cell) {
-                meet_at(f, &s, at);
+            const size_t steps = (size_t)ceil(length / (0.5 * f->cell));
+            for (size_t i = 0; i < steps; i++) {
+                meet_at(f, &s, (double)i * 0.5 * f->cell);
             }
             meet_at(f, &s, length);
         }

@@ -195,8 +195,8 @@ static void worse_ground_never_bears_more(void **state)
 
         d.falls = (double)NAN;
         double last = bears;
-        for (double table = 6.0; table >= 0.0; table -= 0.37) {
-            d.table = table;
+        for (int k = 0; k <= 16; k++) {
+            d.table = 6.0 - 0.37 * k;
             sized wet = size(&d, NULL);
             assert_true(wet.h->allowable_bearing <= last * (1.0 + 1e-12));
             last = wet.h->allowable_bearing;

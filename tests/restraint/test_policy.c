@@ -248,6 +248,24 @@ static void beyond_the_rules_largest_thrust_the_concrete_is_to_be_designed(void 
     }
 }
 
+/* T-34: 0.62 m and 0.3 m more, in steps of 0.05 m; beyond 2/3 of 1.81 m nothing fits.
+ */
+static void a_face_is_taller_than_its_pipe_by_what_the_rules_ask(void **state)
+{
+    (void)state;
+    static const double over[] = {0.0, 0.3, 0.57, 0.6};
+    static const double least[] = {0.0, 0.92, 1.19, 0.0};
+    for (int i = 0; i < 4; i++) {
+        kent_build b = main_with(KENT_BLOCKS_ALLOWED, KENT_THRUST_BLOCK, NAN, false);
+        b.model->rules.height_over_diameter = over[i];
+        kent_restraints *r = sized(&b);
+        assert_true(at_e(&b, r)->held == (i < 3));
+        if (i < 3) assert_true(at_e(&b, r)->block.height >= least[i]);
+        if (i == 0) assert_true(at_e(&b, r)->block.height < 0.92);
+        finish(&b, r);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -258,6 +276,7 @@ int main(void)
         cmocka_unit_test(against_an_upward_thrust_blocks_may_be_forbidden_alone),
         cmocka_unit_test(block_and_joints_are_each_for_their_part),
         cmocka_unit_test(without_a_share_or_with_one_part_missing_nothing_is_held),
+        cmocka_unit_test(a_face_is_taller_than_its_pipe_by_what_the_rules_ask),
         cmocka_unit_test(a_large_main_wants_its_own_least_cover),
         cmocka_unit_test(
             beyond_the_rules_largest_thrust_the_concrete_is_to_be_designed),

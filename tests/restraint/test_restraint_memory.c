@@ -148,6 +148,50 @@ static void nothing_leaks_of_systems(void **state)
     kent_build_clear(&b);
 }
 
+/* Blocks that stand in each other's ground, with a share each, in falling ground and
+ * against fill. */
+static void nothing_leaks_of_what_is_said_of_neighbours(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 0.2e6}};
+    kent_build b = kent_build_new();
+    (void)kent_build_point(&b, "A", -300.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "E", 0.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "G", 4.0, 0.0, 50.0);
+    (void)kent_build_point(&b, "Z", 300.0, 0.0, 50.0);
+    const int p = kent_build_pipe(&b, "P", "A E", 0.4, 1000.0);
+    const int q = kent_build_pipe(&b, "Q", "Z G", 0.4, 1000.0);
+    b.model->pipes[p].unit_mass = b.model->pipes[q].unit_mass = 100.0;
+    (void)kent_build_fixed_level(&b, "A", 150.0);
+    (void)kent_build_fixed_level(&b, "Z", 150.0);
+    (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+    kent_soil *s = &b.model->soils[0];
+    s->friction_angle = 0.5;
+    s->cohesion = 0.0;
+    s->friction_ratio = s->passive_ratio = 0.6;
+    s->bearing_gradient = 40e3;
+    b.model->ground.backfill = 0;
+    b.model->ground.water_table = (double)INFINITY;
+    static const char *const ends[] = {"E", "G"};
+    for (int i = 0; i < 2; i++) {
+        const int note = kent_build_note(&b, ends[i]);
+        b.model->notes[note].restraint = KENT_BLOCK_AND_JOINTS;
+        b.model->notes[note].stated.block_share = 0.5;
+        b.model->notes[note].stated.backing = KENT_BACKING_FILL;
+        b.model->notes[note].stated.slope = (kent_slope){{1.0, 0.0, 0.0}, 0.1};
+    }
+    kent_build_derive(&b);
+    kent_loads_result loads = kent_hand_loads(b.model, cases, 1);
+    job j = {b.model, &loads};
+
+    kent_restraints *r = kent_hand_size(&b, cases, 1);
+    assert_int_equal(r->space.count, 2);
+    kent_restraints_free(r);
+    assert_true(kent_allocations_needed(size_once, &j) > 20);
+    kent_hand_clear(&loads);
+    kent_build_clear(&b);
+}
+
 static void freeing_nothing_is_safe(void **state)
 {
     (void)state;
@@ -160,6 +204,7 @@ int main(void)
         cmocka_unit_test(any_allocation_may_fail_and_nothing_leaks),
         cmocka_unit_test(nothing_leaks_of_what_is_said_of_ground_and_obstacles),
         cmocka_unit_test(nothing_leaks_of_systems),
+        cmocka_unit_test(nothing_leaks_of_what_is_said_of_neighbours),
         cmocka_unit_test(freeing_nothing_is_safe),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
