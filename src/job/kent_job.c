@@ -205,6 +205,17 @@ static void copy_notes(const kent_notes *from, kent_notes *to)
     }
 }
 
+/* Pulls are of places along pipes, which need be no fittings. */
+static void copy_cautions_of_pulls(const kent_pulls *p, kent_notes *to)
+{
+    for (size_t i = 0; i < p->end_count; i++) {
+        copy_notes(&p->ends[i].cautions, to);
+    }
+    for (size_t i = 0; i < p->steep_count; i++) {
+        copy_notes(&p->steeps[i].cautions, to);
+    }
+}
+
 kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
                          kent_results **out, kent_error *err)
 {
@@ -232,6 +243,7 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     }
     if (!status) status = kent_restraint_size(m, r->loads, &r->restraints, err);
     if (!status) copy_notes(&r->restraints->cautions, &r->cautions);
+    if (!status) copy_cautions_of_pulls(&r->restraints->pulls, &r->cautions);
     if (!status) status = kent_limit_table_fill(r, err);
     if (!status) kent_limits_judge(r);
     if (!status && (r->cautions.failed || m->cautions.failed || m->assumed.failed)) {

@@ -48,6 +48,8 @@ void kent_list_append(kent_object *list, json_t *value);
  */
 
 void kent_json_put_limits(kent_writer *w);
+void kent_json_put_pulls(kent_writer *w); /* null: none */
+void kent_json_put_runs(kent_writer *w);
 
 /* Of a fitting; null without a block. Quantities also of all together. */
 json_t *kent_json_concrete(const kent_concrete_check *c);

@@ -32,6 +32,7 @@ void kent_page_finish(kent_page *page, const char *heading, kent_table *t);
 void kent_page_say(kent_page *page, const char *lead, kent_text *words);
 
 void kent_page_limits(kent_page *page);    /* what was reached against what is asked */
+void kent_page_runs(kent_page *page);      /* what supports take, where such runs are */
 void kent_page_devices(kent_page *page);   /* extremes of devices, by scenario */
 void kent_page_cavities(kent_page *page);  /* the largest cavities, by scenario */
 void kent_page_twins(kent_page *page);     /* scenarios that repeat another's events */

@@ -444,6 +444,22 @@ static void print_outcome(const kent_sheet *s)
     kent_text_clear(&words);
 }
 
+/* What strings of fused or welded pipe pull at it with. */
+static void print_pulls(const kent_sheet *s)
+{
+    const kent_pulls *pulls = &s->results->restraints->pulls;
+    const int fitting = (int)(s->fitting - s->model->fittings);
+    for (size_t i = 0; i < pulls->end_count; i++) {
+        const kent_pull_end *p = &pulls->ends[i];
+        if (s->results->loads->strings.ends[p->end].fitting != fitting) continue;
+        kent_text_add(s->out, "\n");
+        kent_steps_print(&p->derivation, s->units, s->limit, s->out);
+        for (size_t k = 0; k < p->cautions.count; k++) {
+            kent_table_paragraph(s->out, s->limit, "-  ", p->cautions.text[k]);
+        }
+    }
+}
+
 /* Of this fitting, then of the case and its runs. */
 static void print_cautions(const kent_sheet *s)
 {
@@ -522,6 +538,7 @@ kent_status kent_report_explain(const kent_results *r, int fitting,
     kent_text_add(&out, "\n");
     print_runner_up(&s);
     print_outcome(&s);
+    print_pulls(&s);
     print_cautions(&s);
     print_needs(&s);
     const kent_status status = kent_sink_flush(sink, &out);

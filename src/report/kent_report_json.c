@@ -517,6 +517,8 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     kent_json_put_text(&w, ",\n\"not_held\": ");
     kent_json_put(&w, kent_json_count(r->restraints->not_held));
     kent_json_put_systems(&w);
+    kent_json_put_pulls(&w);
+    kent_json_put_runs(&w);
     kent_json_put_limits(&w);
     kent_json_put_twins(&w);
     kent_json_put_text(&w, ",\n\"limit_exceeded\": ");

@@ -573,6 +573,7 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
     print_cautions(&page);
     print_totals(&page);
     print_pressures(&page);
+    kent_page_runs(&page);
     print_scenarios(&page);
     kent_page_limits(&page);
     kent_page_devices(&page);

@@ -48,6 +48,7 @@ typedef enum kent_fault {
     KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
     KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
     KENT_FAULT_SOIL_UNSTATED,
+    KENT_FAULT_ABOVE_GROUND, /* no soil is there to bear */
     KENT_FAULT_SLOPE, /* the ground before the face falls more than the rules allow */
     KENT_FAULT_FILL,  /* fill before the face that is not stated, or bears nothing */
     KENT_FAULT_SHARE, /* of block and joints, which part is the block's is not stated */

@@ -105,11 +105,25 @@ void kent_holding_find(kent_holding_work *w, kent_holding *h)
 
 /* ---- a block --------------------------------------------------------------------- */
 
+bool kent_holding_above_ground(const kent_holding_work *w)
+{
+    bool above = false;
+
+    for (size_t k = 0; k < w->fitting->port_count; k++) {
+        const kent_port *p = &w->m->ports[w->fitting->port_first + k];
+        if (p->span < 0) continue;
+        if (!w->m->pipes[w->m->spans[p->span].pipe].above_ground) return false;
+        above = true;
+    }
+    return above;
+}
+
 static kent_fault holding_soil_fault(const kent_holding_work *w)
 {
     const bool leans =
         w->demand.load[KENT_SIDEWAYS] > 0.0 || w->demand.load[KENT_DOWNWARD] > 0.0;
 
+    if (kent_holding_above_ground(w)) return KENT_FAULT_ABOVE_GROUND;
     if (!w->soil) return leans ? KENT_FAULT_SOIL_UNSTATED : KENT_FAULT_NONE;
     if (!kent_soil_counts(w->soil)) return KENT_FAULT_SOIL;
     return kent_holding_ground_fault(w);
@@ -188,6 +202,7 @@ static void holding_curve(kent_holding_work *w, kent_holding *h)
         w->demand.load[KENT_UPWARD] <= 0.0 && w->demand.load[KENT_DOWNWARD] <= 0.0;
 
     w->side_load = kent_curve_side_load(sideways, f->angle, f->curve_radius);
+    if (kent_holding_above_ground(w)) return;
     if (!level || !(sideways > 0.0) || !kent_soil_counts(w->soil)) return;
     const double use = w->side_load / (w->site.allowable * w->site.diameter);
     if (isnan(use)) return;

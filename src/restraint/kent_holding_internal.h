@@ -50,6 +50,8 @@ double kent_holding_part(const kent_load_case *c, kent_sense sense);
 /* N: the same with its factor, over what soil may bear more in such cases where soil
  * bears it. source docs/theory/09-load-cases.md, 9.18 */
 double kent_holding_load(const kent_load_case *c, kent_sense sense);
+/* Whether all its pipes lie above ground, on supports. */
+bool kent_holding_above_ground(const kent_holding_work *w);
 
 void kent_holding_find(kent_holding_work *w, kent_holding *h); /* what governs */
 

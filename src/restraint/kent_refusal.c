@@ -283,6 +283,13 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         kent_text_add(t, "no block: the soil is not stated; give ground.soil, or soil "
                          "where this stands");
         return;
+    case KENT_FAULT_ABOVE_GROUND:
+        kent_text_add(t,
+                      "no block: this stands above ground, where no soil bears: hold "
+                      "it by a structure made for %s factored, or carry the push by "
+                      "flanges, welds or restrained joints into pipe that is held",
+                      kent_said_of(KENT_FORCE, units, h->design_thrust).s);
+        return;
     case KENT_FAULT_COVER_UNSTATED:
         kent_text_add(t, "no block: the cover is not stated; give ground.cover, or "
                          "cover where this stands");
@@ -429,7 +436,10 @@ static void refuse_curve(const kent_holding_work *w, const kent_holding *h,
     if (h->held) return;
     kent_text_add(t, "the curve presses on the soil beside it with %s factored, ",
                   kent_said_of(KENT_FORCE_PER_LENGTH, units, w->side_load).s);
-    if (!level) {
+    if (kent_holding_above_ground(w)) {
+        kent_text_add(t, "and above ground no soil is beside it: guide it by a "
+                         "structure made for that");
+    } else if (!level) {
         kent_text_add(t,
                       "and up or down too, which is not judged: weigh it against the "
                       "ground above, or make the turn with bends that are held");

@@ -1,5 +1,6 @@
 #include "kent_restraint.h"
 #include "kent_concrete_internal.h"
+#include "kent_pull_internal.h"
 #include "kent_space_internal.h"
 #include "kent_system_internal.h"
 
@@ -145,6 +146,8 @@ kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *lo
         status = kent_error_nomem(err);
         goto done;
     }
+    status = kent_pulls_find(m, loads, r->fittings, &r->pulls, err);
+    if (status != KENT_OK) goto done;
     *out = r;
     r = NULL; /* handed over */
 done:
@@ -164,6 +167,7 @@ void kent_restraints_free(kent_restraints *r)
     kent_space_clear(&r->space);
     kent_systems_clear(&r->systems);
     kent_notes_clear(&r->cautions);
+    kent_pulls_clear(&r->pulls);
     free(r->fittings);
     free(r);
 }

@@ -11,6 +11,7 @@
 #include "kent_derivation.h"
 #include "kent_loads.h"
 #include "kent_other_way.h"
+#include "kent_pull.h"
 #include "kent_route.h"
 #include "kent_space.h"
 #include "kent_stability.h"
@@ -186,6 +187,7 @@ typedef struct kent_restraints {
     kent_space space; /* who is near whom */
     kent_systems systems; /* of fittings held by restrained joints */
     kent_notes cautions;  /* of all the blocks together */
+    kent_pulls pulls;     /* along pipes */
 } kent_restraints;
 
 kent_status kent_restraint_size(const kent_model *m, const kent_loads_result *loads,

@@ -48,6 +48,8 @@ static void every_refused_allocation_is_reported(void **state)
     (void)kent_build_point(&b, "Q", 600.0, 300.0, 20.0);
     (void)kent_build_point(&b, "E", 900.0, 300.0, 20.0);
     (void)kent_build_pipe(&b, "A", "R P Q E", 0.5, 1000.0);
+    b.model->pipes[0].above_ground = true; /* runs, and ends of a string */
+    b.model->pipes[0].joint = KENT_FUSED;
     (void)kent_build_fixed_level(&b, "R", 100.0);
     (void)kent_build_valve(&b, "VE", "E", 0.05, 20.0);
     (void)kent_build_scenario(&b, "shut", 2.5);
