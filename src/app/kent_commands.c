@@ -228,6 +228,9 @@ kent_exit kent_commands_do(const kent_options *o)
     case KENT_CROSS_CHECK:
         code = command_cross_check(&s);
         break;
+    case KENT_AS_BUILT:
+        code = kent_command_as_built(&s);
+        break;
     case KENT_STANDARD_TABLE:
         code = kent_command_standard_table(&s);
         break;

@@ -45,6 +45,10 @@ static const command_row COMMANDS[] = {
      KENT_EXPLAIN, GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
     {"cross-check", "one CASE", 1, 1, KENT_CROSS_CHECK,
      GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_WIDE | GAVE_QUIET},
+    {"as-built", "a CASE and at most 8 FITTINGs", 1, 1 + KENT_OPTIONS_WORDS,
+     KENT_AS_BUILT,
+     GAVE_SCENARIO | GAVE_UNITS | GAVE_THREADS | GAVE_FORMAT | GAVE_WIDE | GAVE_QUIET |
+         GAVE_STRICT},
     {"standard-table", "one FILE", 1, 1, KENT_STANDARD_TABLE,
      GAVE_UNITS | GAVE_THREADS | GAVE_FORMAT | GAVE_WIDE | GAVE_QUIET | GAVE_STRICT},
     {"catalogue", "a part and at most 8 words", 0, 1 + KENT_OPTIONS_WORDS,
@@ -52,7 +56,7 @@ static const command_row COMMANDS[] = {
 };
 enum { COMMAND_COUNT = sizeof COMMANDS / sizeof COMMANDS[0] };
 
-static const char *const LATER[] = {"as-built",    "draw",        "vary", "find-limit",
+static const char *const LATER[] = {"draw",        "vary",        "find-limit",
                                     "probability", "from-survey", "serve"};
 enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 
@@ -66,6 +70,7 @@ static const char ARGUMENTS[] =
     "check --keys\n"
     "explain CASE [FITTING...]\n"
     "cross-check CASE\n"
+    "as-built CASE [FITTING...]\n"
     "standard-table FILE\n"
     "catalogue [pipes|materials|valves|pumps|soils|rules [WORD...]]";
 
@@ -81,6 +86,8 @@ static const char DOCUMENT[] =
     "explain    the numbers of every FITTING named, else of all, as a hand "
     "calculation\n"
     "cross-check  peaks by a second, independent method beside those of the run\n"
+    "as-built   the factor that blocks and joints reach by the dimensions that were "
+    "built\n"
     "standard-table  sizes x fittings x soils of FILE at one pressure, with all that "
     "the "
     "table stands on\n"
@@ -219,7 +226,8 @@ static const command_row *find_command(struct argp_state *state, const reading *
     } else {
         argp_error(state,
                    "'%s' is not a command; one of run, check, explain, "
-                   "cross-check, standard-table, catalogue",
+                   "cross-check, as-built, standard-table, "
+                   "catalogue",
                    word);
     }
     return NULL; /* not reached: argp_error ends the program */
@@ -254,7 +262,7 @@ static void finish(struct argp_state *state, reading *r)
 {
     if (r->word_count == 0) {
         argp_error(state, "no command; one of run, check, explain, cross-check, "
-                          "standard-table, catalogue");
+                          "as-built, standard-table, catalogue");
     }
     const command_row *c = find_command(state, r);
     if (!c) return;

@@ -20,6 +20,7 @@ typedef enum kent_command {
     KENT_CHECK,
     KENT_EXPLAIN,
     KENT_CROSS_CHECK,
+    KENT_AS_BUILT,
     KENT_STANDARD_TABLE,
     KENT_CATALOGUE_LIST
 } kent_command;

@@ -44,6 +44,7 @@ kent_exit kent_session_print_report(kent_session *s, kent_status status,
 
 /* ---- commands in files of their own ---------------------------------------------- */
 
+kent_exit kent_command_as_built(kent_session *s);
 kent_exit kent_command_standard_table(kent_session *s);
 
 #endif

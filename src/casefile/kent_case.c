@@ -106,6 +106,8 @@ static const struct {
          ground_zone_count, kent_fill_ground_zone, NO_SHELF, NULL),
     LIST("fittings", "fitting", kent_fitting_note, notes, note_count, kent_fill_fitting,
          KENT_SHELF_FITTINGS, NULL),
+    LIST("as_built", "as_built", kent_built, built, built_count, kent_fill_built,
+         NO_SHELF, NULL),
 #undef LIST
 #undef DEVICES
 };
@@ -254,6 +256,7 @@ kent_status kent_fill_case(kent_filling *f, const kent_twig *root, const char *p
     kent_status status = f->model ? KENT_OK : kent_error_nomem(err);
     if (!status) status = fill_all(f, root, path, err);
     if (!status) status = kent_model_derive(f->model, f->reader.complaints);
+    if (!status) status = kent_fill_built_check(f);
     if (status == KENT_E_NOMEM) (void)kent_error_nomem(err);
     if (!status) {
         *out = f->model;

@@ -18,6 +18,7 @@ typedef struct kent_filling {
     size_t law_capacity;
     size_t port_capacity;
     size_t level_capacity, scenario_state_capacity;
+    size_t built_leg_capacity;
     size_t creep_capacity, obstacle_capacity, together_capacity;
     size_t closes_capacity;
     size_t running_capacity, without_capacity, burst_capacity;
@@ -54,6 +55,8 @@ void kent_fill_ground(kent_filling *f);
 void kent_fill_loads(kent_filling *f);
 void kent_fill_limits(kent_filling *f);
 void kent_fill_solver(kent_filling *f);
+/* Once fittings are derived: that what was built is one, and its legs are its own. */
+kent_status kent_fill_built_check(kent_filling *f);
 void kent_fill_creep(kent_filling *f); /* cautions where nothing creeps that should */
 
 /* What is stated for the restraint of a fitting: slope, backing, shares, lengths. */
@@ -66,7 +69,7 @@ kent_fill_one kent_fill_point, kent_fill_pipe, kent_fill_fixed_level, kent_fill_
     kent_fill_valve, kent_fill_pump, kent_fill_check_valve, kent_fill_control_valve,
     kent_fill_surge_tank, kent_fill_one_way_tank, kent_fill_air_vessel,
     kent_fill_relief_valve, kent_fill_air_valve, kent_fill_state, kent_fill_scenario,
-    kent_fill_soil, kent_fill_ground_zone, kent_fill_fitting;
+    kent_fill_soil, kent_fill_ground_zone, kent_fill_fitting, kent_fill_built;
 
 /* Of a pipe: its ratings, de-rated where its material is a warm plastic, and the
  * standard that they are by. row, material: NULL where none is named. */

@@ -32,6 +32,7 @@ static void take(const kent_standard *t, kent_results *r, kent_standard_cell_res
     const kent_fitting_loads *loads = &r->loads->fittings[c->fitting];
     c->holding = *h;
     c->holding.derivation = (kent_derivation){0};
+    c->holding.as_built = (kent_as_built){0};
     h->cautions = h->remarks = (kent_notes){0};
     c->thrust = NAN;
     if (h->governing >= 0) {

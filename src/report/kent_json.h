@@ -47,6 +47,9 @@ void kent_list_append(kent_object *list, json_t *value);
 /* ---- parts of results.json ---------------------------------------------------------
  */
 
+/* What a fitting reaches as built; null where nothing is stated. */
+json_t *kent_json_built(const kent_results *r, size_t fitting);
+
 void kent_json_put_limits(kent_writer *w);
 void kent_json_put_pulls(kent_writer *w); /* null: none */
 void kent_json_put_runs(kent_writer *w);

@@ -75,6 +75,16 @@ kent_status kent_report_explain(const kent_results *r, int fitting,
 kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinions,
                               const kent_report_options *o, kent_sink sink);
 
+/* `as-built`: what was built of the fittings named ([count] indices) and the factor it
+ * reaches in every load case; a row per part and case; or both as JSON. */
+kent_status kent_report_built(const kent_results *r, const int *fittings, size_t count,
+                              const kent_report_options *o, kent_sink sink);
+kent_status kent_report_built_csv(const kent_results *r, const int *fittings,
+                                  size_t count, const kent_report_options *o,
+                                  kent_sink sink);
+kent_status kent_report_built_json(const kent_results *r, const int *fittings,
+                                   size_t count, kent_sink sink);
+
 /* `standard-table`: every assumption, then a table for each soil; a row per cell; or
  * both as JSON. */
 kent_status kent_report_standard(const kent_standard_result *r,

@@ -472,6 +472,7 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object_set(&o, "ports", ports_of(m, f, loads, h));
     kent_object_set(&o, "restrained_length_m", kent_json_real(h->restrained_length));
     kent_object_set(&o, "restrained", kent_json_legs(m, f, h));
+    kent_object_set(&o, "as_built", kent_json_built(r, index));
     kent_object_set(&o, "cautions", kent_json_notes(&h->cautions));
     return kent_object_done(o);
 }

@@ -1,4 +1,5 @@
 #include "kent_restraint.h"
+#include "kent_as_built_internal.h"
 #include "kent_concrete_internal.h"
 #include "kent_pull_internal.h"
 #include "kent_space_internal.h"
@@ -84,10 +85,11 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_refuse(w, h);
         kent_concrete_finish(w, h);
     }
+    kent_as_built_find(w, h);
     kent_holding_caution(w, h);
     kent_holding_derive(w, h);
     const bool lost = h->cautions.failed || h->remarks.failed || h->derivation.failed ||
-                      w->met.failed || w->clear.failed;
+                      w->met.failed || w->clear.failed || h->as_built.broken.failed;
     kent_notes_clear(&w->met);
     kent_notes_clear(&w->clear);
     return lost ? kent_error_nomem(err) : KENT_OK;
@@ -163,6 +165,7 @@ void kent_restraints_free(kent_restraints *r)
         kent_notes_clear(&r->fittings[i].cautions);
         kent_notes_clear(&r->fittings[i].remarks);
         kent_derivation_clear(&r->fittings[i].derivation);
+        kent_as_built_clear(&r->fittings[i].as_built);
     }
     kent_space_clear(&r->space);
     kent_systems_clear(&r->systems);

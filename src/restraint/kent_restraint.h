@@ -6,6 +6,7 @@
 #ifndef KENT_RESTRAINT_H
 #define KENT_RESTRAINT_H
 
+#include "kent_as_built.h"
 #include "kent_bearing.h"
 #include "kent_concrete.h"
 #include "kent_derivation.h"
@@ -169,6 +170,8 @@ typedef struct kent_holding {
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */
+    kent_as_built
+        as_built; /* what it reaches as it was built; nothing is stated: nil */
     kent_footprint footprint; /* what it takes up of the ground */
     kent_notes cautions;      /* of this fitting; says what would help where not held */
     kent_notes remarks;       /* why no length stands beside what holds it, and what is

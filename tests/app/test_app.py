@@ -417,6 +417,40 @@ class App(unittest.TestCase):
             self.assertIn(word, r.stdout)
         self.assertEqual(self.left(), set())
 
+    def test_as_built_tells_factors_and_never_a_verdict(self):
+        case = str(SOURCE / "cases/learn/11-as-built/11-as-built.cfg")
+        r = self.call("as-built", case)
+        self.assertEqual(r.returncode, 0, r.stderr)
+        self.assertLessEqual(max(map(len, r.stdout.splitlines())), 100)
+        self.assertIn("Factor reached 1.21, asked 1.50: block, sideways in 'test'.", r.stdout)
+        self.assertIn("Factor reached 3.23, asked 1.50: leg towards E in 'test'.", r.stdout)
+        self.assertIn("0.60 m thick, less than the 0.75 m", r.stdout)
+        self.assertNotRegex(r.stdout, r"(?i)\b(ok|pass(ed|es)?|safe|adequate|complies)\b")
+        one = self.call("as-built", case, "PI2", "--strict")
+        self.assertEqual(one.returncode, 0)
+        self.assertNotIn("PI1, bend", one.stdout)
+        short = self.call("as-built", case, "--strict")
+        self.assertEqual((short.returncode, short.stdout), (3, r.stdout))
+        self.assertIn("2 of the fittings built reach less", short.stderr)
+        rows = list(csv.DictReader(io.StringIO(
+            self.call("as-built", case, "--format", "csv").stdout)))
+        data = json.loads(self.call("as-built", case, "--format", "json").stdout)
+        reaches = [x for f in data["fittings"] for x in f["as_built"]["reaches"]]
+        self.assertEqual(len(rows), len(reaches))
+        for row, reach in zip(rows, reaches, strict=True):
+            self.assertAlmostEqual(float(row["factor reached"]), reach["factor_reached"],
+                                   places=6)
+        self.assertEqual(sum(row["governs"] == "yes" for row in rows), 3)
+        run = json.loads(self.call("run", case, "--no-files", "--format", "json").stdout)
+        self.assertEqual([f["as_built"] for f in data["fittings"]],
+                         [f["as_built"] for f in run["fittings"]])
+        r = self.call("as-built", "main.cfg")
+        self.assertEqual((r.returncode, r.stdout), (2, ""))
+        self.assertIn("nothing as built", r.stderr)
+        r = self.call("as-built", case, "PI9")
+        self.assertEqual((r.returncode, r.stdout), (2, ""))
+        self.assertIn("did you mean 'PI1'", r.stderr)
+
     def test_a_standard_table_says_what_it_stands_on(self):
         table = str(SOURCE / "cases/standard/calverdyke/calverdyke.cfg")
         r = self.call("standard-table", table)
@@ -573,7 +607,8 @@ class App(unittest.TestCase):
         shown = self.call("--help").stdout
         for option in re.findall(r"--[a-z-]+", shown):
             self.assertIn(f"`{option}", manual)
-        for command in ("run", "check", "explain", "cross-check", "catalogue"):
+        for command in ("run", "check", "explain", "cross-check", "as-built",
+                        "standard-table", "catalogue"):
             self.assertIn(f"`{command}", manual)
 
 
