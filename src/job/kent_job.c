@@ -1,6 +1,7 @@
 #include "kent_job.h"
 
 #include "kent_alarm.h"
+#include "kent_completeness.h"
 #include "kent_limit_table.h"
 #include "kent_limits.h"
 #include "kent_overload.h"
@@ -246,6 +247,8 @@ kent_status kent_job_run(const kent_model *m, const kent_job_options *options,
     if (!status) copy_cautions_of_pulls(&r->restraints->pulls, &r->cautions);
     if (!status) status = kent_limit_table_fill(r, err);
     if (!status) kent_limits_judge(r);
+    if (!status) kent_completeness_judge(r);
+    if (!status) kent_completeness_test(r);
     if (!status && (r->cautions.failed || m->cautions.failed || m->assumed.failed)) {
         status = kent_error_nomem(err);
     }

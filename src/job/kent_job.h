@@ -101,6 +101,22 @@ typedef struct kent_sensitivity {
     kent_error stopped[KENT_VARIES][KENT_WAYS]; /* a march that could not go on */
 } kent_sensitivity;
 
+/* Load cases that a main is not held without, unless it is said why. */
+typedef enum kent_needed_case {
+    KENT_NEEDS_TEST,
+    KENT_NEEDS_STATIC,
+    KENT_NEEDS_SHUT_OFF, /* where there are pumps */
+    KENT_NEEDS_SURGE,
+    KENT_NEEDED_CASES
+} kent_needed_case;
+
+typedef struct kent_needed {
+    const char *what;   /* "test" ... */
+    bool asked;         /* false: it means nothing here */
+    bool present;       /* among the load cases of this run */
+    const char *waived; /* the case's reason to do without; NULL */
+} kent_needed;
+
 typedef struct kent_results {
     const kent_model *model; /* the caller's; must outlive the results */
     kent_steady **steadies;  /* [steady_count], by state */
@@ -114,6 +130,8 @@ typedef struct kent_results {
     kent_restraints *restraints;
     kent_limit *limits; /* [limit_count] by case, then by kind, then pipe or fitting */
     size_t limit_count;
+    kent_needed completeness[KENT_NEEDED_CASES];
+    bool incomplete;     /* something asked is neither present nor waived */
     kent_notes cautions; /* of the case and the runs */
     bool limit_exceeded; /* one of limits, for a scenario that decides, or a fitting
                             nothing can hold: --strict */

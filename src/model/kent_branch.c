@@ -118,7 +118,7 @@ bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,
     return true;
 }
 
-bool kent_branch_port(const kent_branch *branch, kent_port *out)
+bool kent_branch_port(const kent_model *m, const kent_branch *branch, kent_port *out)
 {
     const bool slips = kent_joint_slips(branch->joint);
     const bool gasketed = slips || branch->joint == KENT_RESTRAINED;
@@ -130,7 +130,10 @@ bool kent_branch_port(const kent_branch *branch, kent_port *out)
     out->direction = branch->direction;
     out->inside_diameter = branch->inside_diameter;
     out->outside_diameter = branch->outside_diameter;
-    out->seal_diameter = gasketed ? branch->outside_diameter : branch->inside_diameter;
+    out->seal_diameter = gasketed
+                             ? kent_seal_diameter(m, branch->outside_diameter,
+                                                  branch->inside_diameter, (double)NAN)
+                             : branch->inside_diameter;
     out->sign = 1.0;
     return true;
 }

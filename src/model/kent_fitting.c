@@ -37,8 +37,10 @@ static kent_port port_of(const kent_model *m, const kent_layout *l, kent_arm arm
 
     return (kent_port){
         .inside_diameter = pipe->inside_diameter,
-        .seal_diameter =
-            gasketed && isfinite(outside) ? outside : pipe->inside_diameter,
+        .seal_diameter = gasketed
+                             ? kent_seal_diameter(m, outside, pipe->inside_diameter,
+                                                  pipe->nominal_size)
+                             : pipe->inside_diameter,
         .outside_diameter = outside,
         .level = (double)NAN,
         .momentum_factor = (double)NAN,
@@ -397,7 +399,7 @@ bool kent_fitting_at(kent_model *m, const kent_layout *l, int point,
     kent_fitting_describe_legs(out, ports, site.count);
     if (site.branch.end != KENT_BRANCH_NONE) {
         if (site.count == 2) out->angle = branch_angle_of(&site);
-        if (kent_branch_port(&site.branch, &ports[site.count])) out->port_count++;
+        if (kent_branch_port(m, &site.branch, &ports[site.count])) out->port_count++;
         caution_cap(&site);
     }
     if (site.curved) {

@@ -31,8 +31,10 @@ static bool copy_given(const kent_model *m, const kent_fitting_note *note,
             return false;
         }
         port->direction = kent_vec3_unit(port->direction);
-        port->seal_diameter = kent_first_given(
-            port->seal_diameter, port->outside_diameter, port->inside_diameter);
+        if (isnan(port->seal_diameter)) {
+            port->seal_diameter = kent_seal_diameter(
+                m, port->outside_diameter, port->inside_diameter, (double)NAN);
+        }
         net += port->flow;
         largest = fmax(largest, fabs(port->flow));
     }

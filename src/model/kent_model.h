@@ -1011,6 +1011,13 @@ kent_pipe kent_pipe_blank(void);
 kent_soil kent_soil_blank(void);
 kent_fitting_note kent_note_blank(void);
 kent_port kent_port_blank(void);
+
+/* m: the diameter that the pressure acts on at a joint that slips, as loads.thrust_area
+ * says: the outside, else the bore or the nominal size where that is asked for. inside
+ * where outside is not known (NAN), outside where nominal is not. source 8.2 */
+double kent_seal_diameter(const kent_model *m, double outside, double inside,
+                          double nominal);
+
 kent_stated kent_stated_blank(void);
 kent_built kent_built_blank(void);
 

@@ -173,7 +173,7 @@ bool kent_branch_direct(const kent_model *m, const kent_fitting_note *note,
                         const kent_port *ports, size_t legs, bool surveyed,
                         kent_vec3 *out, kent_complaints *complaints);
 /* Its port. False: as built it has none, since its end is one body with the fitting. */
-bool kent_branch_port(const kent_branch *branch, kent_port *out);
+bool kent_branch_port(const kent_model *m, const kent_branch *branch, kent_port *out);
 
 /* kent_fitting_list.c: all of them, in the order of kent_model.fittings; notes go to
  * their points. */

@@ -82,6 +82,22 @@ void kent_ports_run_first(kent_port *ports, size_t count)
     }
 }
 
+double kent_seal_diameter(const kent_model *m, double outside, double inside,
+                          double nominal)
+{
+    const double usual = isfinite(outside) ? outside : inside;
+
+    switch (m->loads.thrust_area) {
+    case KENT_AREA_OUTSIDE:
+        break;
+    case KENT_AREA_INSIDE:
+        return inside;
+    case KENT_AREA_NOMINAL:
+        return isfinite(nominal) ? nominal : usual;
+    }
+    return usual;
+}
+
 bool kent_ports_same_size(const kent_port *a, const kent_port *b)
 {
     const bool outside = isfinite(a->outside_diameter + b->outside_diameter);

@@ -61,6 +61,12 @@ json_t *kent_json_quantities(const kent_quantities *q);
 /* A list: systems of restrained lengths. */
 void kent_json_put_systems(kent_writer *w);
 
+/* Load cases asked for; of a fitting the next to what governs (null: none) and what
+ * pushes other ways. */
+json_t *kent_json_completeness(const kent_results *r);
+json_t *kent_json_runner_up(const kent_fitting_loads *loads, const kent_holding *h);
+json_t *kent_json_other_ways(const kent_fitting_loads *loads, const kent_holding *h);
+
 /* The restrained lengths of one fitting: a list, empty where none can be given. */
 json_t *kent_json_legs(const kent_model *m, const kent_fitting *f,
                        const kent_holding *h);

@@ -369,8 +369,9 @@ static void print_runner_up(const kent_sheet *s)
                   s->loads->cases[h->runner_up].title.s,
                   kent_shown_with_unit(KENT_FORCE, s->units, h->runner_up_load).text);
     if (h->design_thrust > 0.0) {
-        kent_text_add(&words, ", %.0f %% of what governs",
-                      100.0 * h->runner_up_load / h->design_thrust);
+        kent_text_add(&words, ", %.0f %% of what governs (which is %.1f %% more)",
+                      100.0 * h->runner_up_load / h->design_thrust,
+                      100.0 * h->runner_up_margin);
     }
     kent_text_add(&words, ".");
     kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));

@@ -462,6 +462,8 @@ static json_t *fitting_of(const kent_results *r, size_t index)
         kent_list_append(&cases, case_of(m, &loads->cases[i]));
     }
     kent_object_set(&o, "load_cases", kent_object_done(cases));
+    kent_object_set(&o, "runner_up", kent_json_runner_up(loads, h));
+    kent_object_set(&o, "other_ways", kent_json_other_ways(loads, h));
     kent_object_set(&o, "restraint", kent_json_words(kent_restraint_word(h->chosen)));
     kent_object_set(&o, "held", json_boolean(h->held));
     kent_object_set(&o, "needs_nothing", json_boolean(h->needs_nothing));
@@ -509,7 +511,9 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     for (size_t i = 0; i < r->model->assumed.count; i++) {
         kent_json_put_element(&w, assumed_of(r->model->assumed.text[i]));
     }
-    kent_json_put_text(&w, "],\n\"test\": ");
+    kent_json_put_text(&w, "],\n\"completeness\": ");
+    kent_json_put(&w, kent_json_completeness(r));
+    kent_json_put_text(&w, ",\n\"test\": ");
     kent_json_put(&w, test_of(r));
     kent_json_put_text(&w, ",\n\"concrete_m3\": ");
     kent_json_put(&w, kent_json_real(r->restraints->concrete));

@@ -283,6 +283,7 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
     }
     caution_test_pressure(w, h);
     kent_other_ways_caution(w, h);
+    kent_loads_caution(w, h);
     if (h->needs_nothing || h->unbalanced) return;
     caution_peak(w, h);
     caution_block(w, h);

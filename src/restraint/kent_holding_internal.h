@@ -63,6 +63,8 @@ bool kent_one_way(const kent_load_case *a, const kent_load_case *b);
 void kent_other_ways_find(kent_holding_work *w, kent_holding *h);
 void kent_other_ways_take(const kent_holding_work *w, kent_holding *h);
 void kent_other_ways_caution(const kent_holding_work *w, kent_holding *h);
+/* The area taken, an end that is opened, straight pieces that pass a pull on. */
+void kent_loads_caution(const kent_holding_work *w, kent_holding *h);
 /* What couple the pushes of a group leave, and whether a block on it could hold it.
  * source docs/theory/10-blocks.md, 10.30 */
 kent_couple kent_couple_find(const kent_model *m, const kent_fitting *group,

@@ -143,15 +143,17 @@ kent_instant kent_instant_extended(const kent_model *m, const kent_fitting *f,
 
 /* The branch without a pipe as a leg: what joins it may slip, so that the pressure acts
  * on its outside diameter. */
-static kent_port extended_leg(const kent_branch *branch)
+static kent_port extended_leg(const kent_model *m, const kent_branch *branch)
 {
     kent_port port = kent_port_blank();
 
     port.kind = KENT_PORT_STUB;
     port.direction = branch->direction;
-    port.outside_diameter = port.seal_diameter = branch->outside_diameter;
+    port.outside_diameter = branch->outside_diameter;
     port.inside_diameter = isnan(branch->inside_diameter) ? branch->outside_diameter
                                                           : branch->inside_diameter;
+    port.seal_diameter =
+        kent_seal_diameter(m, port.outside_diameter, port.inside_diameter, (double)NAN);
     return port;
 }
 
@@ -166,12 +168,15 @@ size_t kent_load_case_ports(const kent_model *m, const kent_fitting *f,
     if (!c->extended) return count;
     for (size_t i = 0; i < count; i++) {
         if (out[i].kind != KENT_PORT_OUTLET) continue;
-        out[i].seal_diameter = fmax(out[i].seal_diameter, f->branch.outside_diameter);
+        out[i].seal_diameter =
+            fmax(out[i].seal_diameter,
+                 kent_seal_diameter(m, f->branch.outside_diameter,
+                                    f->branch.inside_diameter, (double)NAN));
         there = true;
     }
     if (there) return count;
     assert(count < KENT_PORTS);
-    out[count] = extended_leg(&f->branch);
+    out[count] = extended_leg(m, &f->branch);
     return count + 1;
 }
 

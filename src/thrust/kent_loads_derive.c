@@ -160,6 +160,37 @@ static void sheet_port_heading(const kent_sheet *s, size_t i)
     }
 }
 
+static const char *seal_says(const kent_sheet *s, const kent_port *port)
+{
+    const bool outside = port->seal_diameter == port->outside_diameter &&
+                         port->seal_diameter > port->inside_diameter;
+
+    if (outside) {
+        return "outside diameter: the pressure acts on it where a joint slips";
+    }
+    switch (s->model->loads.thrust_area) {
+    case KENT_AREA_OUTSIDE:
+        break;
+    case KENT_AREA_INSIDE:
+        return "bore: on it the pressure acts, as thrust_area says";
+    case KENT_AREA_NOMINAL:
+        return "nominal size: on it the pressure acts, as thrust_area says";
+    }
+    return "diameter that the pressure acts on";
+}
+
+/* Whether the area depends on the diameter chosen. */
+static bool has_gap(const kent_port *port)
+{
+    return port->outside_diameter > port->inside_diameter;
+}
+
+static bool same_gap(const kent_port *a, const kent_port *b)
+{
+    return a->outside_diameter == b->outside_diameter &&
+           a->inside_diameter == b->inside_diameter;
+}
+
 static void sheet_geometry(const kent_sheet *s, size_t i)
 {
     const kent_port *port = &s->ports[i];
@@ -175,13 +206,16 @@ static void sheet_geometry(const kent_sheet *s, size_t i)
     kent_sheet_put(s, kent_say("n_%zuz", n), cosine(port->direction.z), KENT_RATIO,
                    s->geometry, "outward direction, up");
     kent_sheet_put(s, kent_say("D_%zu", n), port->seal_diameter, KENT_DIAMETER,
-                   catalogued ? KENT_CATALOGUE : KENT_GIVEN,
-                   port->seal_diameter > port->inside_diameter
-                       ? "outside diameter: the pressure acts on it where a joint slips"
-                       : "diameter that the pressure acts on");
+                   catalogued ? KENT_CATALOGUE : KENT_GIVEN, seal_says(s, port));
     kent_sheet_work(s, kent_say("A_%zu", n), area, KENT_AREA,
                     kent_say("pi/4*D_%zu^2", n), "8.2",
                     "area that the pressure acts on");
+    if (!has_gap(port) || (i > 0 && same_gap(port, &s->ports[i - 1]))) return;
+    const double ratio = port->outside_diameter / port->inside_diameter;
+    kent_sheet_put(s, kent_say("more_%zu", n), ratio * ratio - 1.0, KENT_RATIO,
+                   KENT_COMPUTED,
+                   "share by which the area on the outside diameter is more than the "
+                   "bore's");
 }
 
 /* What an open end passes on: all that the others bring. It may stand before them. */
