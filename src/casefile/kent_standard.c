@@ -283,7 +283,10 @@ static kent_status read_cells(reading *r, kent_error *err)
     kent_filling *f = kent_alloc(1, sizeof *f);
     t->cells = kent_alloc(t->soil_count * t->size_count * t->fitting_count,
                           sizeof(kent_model *));
-    if (!f || !t->cells) status = kent_error_nomem(err);
+    if (!f || !t->cells) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
     for (size_t i = 0; !status && i < t->soil_count; i++) {
         for (size_t k = 0; !status && k < t->size_count; k++) {
             for (size_t n = 0; !status && n < t->fitting_count; n++) {
@@ -291,6 +294,7 @@ static kent_status read_cells(reading *r, kent_error *err)
             }
         }
     }
+done:
     free(f);
     return status;
 }
@@ -329,8 +333,11 @@ kent_status kent_standard_read(const char *path, const kent_catalogue *catalogue
     kent_tree *tree = NULL;
     kent_filling *f = kent_alloc(1, sizeof *f);
     reading r = {.f = f, .path = path, .table = kent_alloc(1, sizeof *r.table)};
-    kent_status status = f && r.table ? KENT_OK : kent_error_nomem(err);
-    if (status) goto done;
+    kent_status status = KENT_OK;
+    if (!f || !r.table) {
+        status = kent_error_nomem(err);
+        goto done;
+    }
 
     f->catalogue = catalogue;
     f->shown = shown;

@@ -181,8 +181,8 @@ static void a_published_length_reaches_the_factor_it_was_drawn_up_for(void **sta
         const kent_load_case *c =
             &w.results->loads->fittings[kent_model_fitting_of(w.model, "F")]
                  .cases[b->reaches[i].load_case];
-        if (c->kind == KENT_CASE_TEST)
-            reached[b->reaches[i].port] = b->reaches[i].reached;
+        if (c->kind != KENT_CASE_TEST) continue;
+        reached[b->reaches[i].port] = b->reaches[i].reached;
     }
     assert_close(reached[0], 1.5, 2e-3);
     assert_close(reached[1], 0.5 * reached[0], 1e-9);

@@ -144,8 +144,8 @@ static char *main_text(size_t which, const char *class)
 static void assert_same(double a, double b, const char *what, const char *where)
 {
     const bool same = (isnan(a) && isnan(b)) || fabs(a - b) <= 1e-12 * fabs(b);
-    if (!same)
-        fail_msg("%s of %s: %.17g in the table, %.17g in the case", what, where, a, b);
+    if (same) return;
+    fail_msg("%s of %s: %.17g in the table, %.17g in the case", what, where, a, b);
 }
 
 static void assert_same_holding(const kent_standard_cell_result *c,
