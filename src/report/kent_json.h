@@ -71,6 +71,10 @@ json_t *kent_json_other_ways(const kent_fitting_loads *loads, const kent_holding
 json_t *kent_json_legs(const kent_model *m, const kent_fitting *f,
                        const kent_holding *h);
 
+/* Of one fitting: whether its block stays in place, and its straps; null without one.
+ */
+json_t *kent_json_stability(const kent_fitting_loads *loads, const kent_holding *h);
+
 /* Of one march, by its index into results' scenarios. */
 void kent_json_put_screening(kent_writer *w, size_t march);
 void kent_json_put_swings(kent_writer *w, size_t march);

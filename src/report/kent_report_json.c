@@ -471,6 +471,8 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object_set(&o, "concrete", kent_json_concrete(&h->concrete));
     kent_object_set(&o, "quantities", kent_json_quantities(&h->quantities));
     kent_object_set(&o, "ground", kent_json_ground(r, index));
+    kent_object_set(&o, "stability",
+                    kent_json_stability(&r->loads->fittings[index], h));
     kent_object_set(&o, "ports", ports_of(m, f, loads, h));
     kent_object_set(&o, "restrained_length_m", kent_json_real(h->restrained_length));
     kent_object_set(&o, "restrained", kent_json_legs(m, f, h));

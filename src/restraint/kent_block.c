@@ -43,10 +43,10 @@ double kent_block_thickness(const kent_rules *rules, kent_face face, double diam
     return kent_side_up(fmax(least, spread), rules->side_step);
 }
 
-/* source docs/theory/10-blocks.md, 10.13 */
-double kent_gravity_volume(double upward, double factor, double unit_weight)
+/* source docs/theory/10-blocks.md, 10.34 */
+double kent_block_least_height(const kent_rules *rules, const kent_site *site)
 {
-    return factor * upward / unit_weight;
+    return kent_rules_height(rules, site->diameter);
 }
 
 /* ---- parts ----------------------------------------------------------------------- */
@@ -118,52 +118,20 @@ double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
     return net > 0.0 ? sideways / net : NAN;
 }
 
-/* source docs/theory/10-blocks.md, 10.15 */
-double kent_gravity_most(const kent_rules *rules, const kent_site *site)
+/* Thick enough for what lifts it. source docs/theory/10-blocks.md, 10.13 */
+static void base_weigh(const kent_rules *rules, const kent_site *site,
+                       const kent_demand *demand, kent_block *out)
 {
-    return kent_side_down(2.0 * kent_site_axis(site), rules->side_step);
-}
+    const double step = rules->side_step;
 
-double kent_gravity_shallow(const kent_rules *rules, const kent_site *site,
-                            double volume)
-{
-    const double most = kent_gravity_most(rules, site);
-    return most > 0.0 ? sqrt(volume / most) : 0.0; /* NaN: no depth is stated */
-}
-
-/* Square in plan and no taller than wide; wide enough for what pulls it down.
- * source docs/theory/10-blocks.md, 10.13 .. 10.15 */
-static void gravity_shape(const kent_rules *rules, const kent_site *site,
-                          const kent_demand *demand, double unit_weight,
-                          kent_block *out)
-{
-    const double volume =
-        kent_gravity_volume(demand->load[KENT_UPWARD], 1.0, unit_weight);
-    const double footing = demand->load[KENT_DOWNWARD] > 0.0
-                               ? demand->load[KENT_DOWNWARD] / site->vertical
-                               : 0.0;
-    const double side = kent_side_up(fmax(fmax(cbrt(volume), sqrt(footing)),
-                                          kent_gravity_shallow(rules, site, volume)),
-                                     rules->side_step);
-
-    out->width = side;
-    out->thickness = side;
-    out->height = kent_side_up(fmax(volume / (side * side), rules->least_height),
-                               rules->side_step);
-    out->volume = out->width * out->height * out->thickness;
-}
-
-static void gravity_size(const kent_rules *rules, const kent_site *site,
-                         const kent_demand *demand, kent_block *out)
-{
+    if (!(demand->load[KENT_UPWARD] > 0.0)) return;
     const double dry = rules->concrete_unit_weight;
-
-    out->type = KENT_BLOCK_GRAVITY;
-    gravity_shape(rules, site, demand, dry, out);
-    const double base = kent_site_axis(site) + 0.5 * out->height;
-    const double weight = kent_site_concrete(site, rules, base);
+    const double lift = demand->load[KENT_UPWARD] / (out->width * out->height);
+    const double deep = fmax(out->thickness, kent_side_up(lift / dry, step));
+    const double under = site->cover + site->diameter + deep;
+    const double weight = kent_site_concrete(site, rules, under);
     out->submerged = weight < dry;
-    if (out->submerged) gravity_shape(rules, site, demand, weight, out);
+    out->thickness = fmax(out->thickness, kent_side_up(lift / weight, step));
 }
 
 /* As square as steps allow and no narrower than the pipe; heavy enough for what lifts
@@ -180,16 +148,63 @@ static void base_size(const kent_rules *rules, const kent_site *site,
     out->height = kent_side_up(fmax(area / out->width, site->diameter), step);
     const kent_face plan = {.width = out->width, .height = out->height};
     out->thickness = kent_site_thickness(rules, site, plan, KENT_DOWNWARD);
-    if (demand->load[KENT_UPWARD] > 0.0) {
-        const double dry = rules->concrete_unit_weight;
-        const double lift = demand->load[KENT_UPWARD] / (out->width * out->height);
-        const double deep = fmax(out->thickness, kent_side_up(lift / dry, step));
-        const double under = site->cover + site->diameter + deep;
-        const double weight = kent_site_concrete(site, rules, under);
-        out->submerged = weight < dry;
-        out->thickness = fmax(out->thickness, kent_side_up(lift / weight, step));
-    }
+    base_weigh(rules, site, demand, out);
     out->volume = out->width * out->height * out->thickness;
+}
+
+/* The side of a gravity block as the face. source docs/theory/20-stability.md, 20.15 */
+static bool own_side_bears(const kent_rules *rules, const kent_site *site,
+                           kent_block *out)
+{
+    const double step = rules->side_step, slack = KENT_SIDE_SLACK * step;
+    const double limit = kent_face_height_limit(rules, kent_site_axis(site));
+    const kent_face side = {
+        .width = fmin(out->width,
+                      kent_side_down(rules->width_to_height[1] * out->height, step)),
+        .height = out->height,
+    };
+
+    const double before = 0.5 * (out->thickness - site->diameter);
+
+    if (before < rules->concrete_behind - slack) return false;
+    if (site->fill || side.height > limit + slack) return false;
+    if (side.width < rules->width_to_height[0] * side.height - slack) return false;
+    if (side.width * side.height < out->bearing_area + site->hole) return false;
+    out->face = side;
+    out->face_thickness = before;
+    return true;
+}
+
+/* A face of its own beside the body. */
+static void face_beside(kent_block *out)
+{
+    out->has_face = true;
+    out->own_side = false;
+    out->face_volume = out->face.width * out->face.height * out->face_thickness;
+}
+
+/* A gravity block kept low enough for its own side to be the face. Returns false, and
+ * leaves *out, where that side does not serve. */
+static bool gravity_as_face(const kent_rules *rules, const kent_site *site,
+                            const kent_demand *demand, kent_block *out)
+{
+    kent_site low = *site;
+    kent_block b = *out;
+
+    low.low = true;
+    if (!(kent_gravity_most(rules, &low) >= site->diameter)) return false;
+    kent_gravity_size(rules, &low, demand, &b);
+    if (!own_side_bears(rules, site, &b)) return false;
+    b.has_face = true;
+    b.own_side = true;
+    b.face_volume = 0.0;
+    *out = b;
+    return true;
+}
+
+static bool too_large(const kent_rules *rules, const kent_block *b)
+{
+    return b->volume + b->face_volume > rules->largest_volume;
 }
 
 /* The concrete behind the face, without the pipe that passes through. m3 */
@@ -240,24 +255,55 @@ kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
     if (!carries) {
         if (up < down) base_size(rules, site, demand, out);
         /* a base that its weight makes taller than wide is a pillar */
-        if (up >= down || out->thickness > out->width) {
-            gravity_size(rules, site, demand, out);
-        }
-        out->has_face = sideways > 0.0;
-        if (out->has_face) {
-            out->face_volume = out->face.width * out->face.height * out->face_thickness;
-        }
+        const bool weight = up >= down || out->thickness > out->width;
+        const bool own =
+            weight && sideways > 0.0 && gravity_as_face(rules, site, demand, out);
+        if (weight && !own) kent_gravity_size(rules, site, demand, out);
+        if (sideways > 0.0 && !own) face_beside(out);
     }
-    if (out->volume + out->face_volume > rules->largest_volume) {
-        return KENT_FAULT_VOLUME;
-    }
-    return fault;
+    return too_large(rules, out) ? KENT_FAULT_VOLUME : fault;
 }
 
-/* source docs/theory/10-blocks.md, 10.9 and 10.10 */
-void kent_block_use(const kent_block *block, const kent_rules *rules,
-                    const kent_site *site, const kent_demand *demand,
-                    double use[KENT_SENSES])
+bool kent_block_widen(const kent_rules *rules, const kent_site *site,
+                      const kent_demand *demand, bool flatter, kent_block *block)
+{
+    const double step = rules->side_step;
+    kent_block b = *block;
+
+    b.widened++;
+    switch (b.type) {
+    case KENT_BLOCK_NONE:
+        return false;
+    case KENT_BLOCK_BEARING:
+        b.thickness = kent_side_up(b.thickness + step, step);
+        b.face_thickness = b.thickness;
+        break;
+    case KENT_BLOCK_GRAVITY:
+        kent_gravity_widen(rules, site, demand, flatter, &b);
+        break;
+    case KENT_BLOCK_BASE: {
+        b.width = kent_side_up(b.width + step, step);
+        b.height = kent_side_up(b.height + step, step);
+        const kent_face plan = {.width = b.width, .height = b.height};
+        b.thickness = kent_site_thickness(rules, site, plan, KENT_DOWNWARD);
+        base_weigh(rules, site, demand, &b);
+        break;
+    }
+    }
+    b.volume = b.width * b.height * b.thickness;
+    if (b.own_side && !own_side_bears(rules, site, &b)) { /* too flat by now */
+        (void)face_size(rules, site, demand->load[KENT_SIDEWAYS], &b);
+        face_beside(&b);
+    }
+    if (too_large(rules, &b)) return false;
+    *block = b;
+    return true;
+}
+
+/* source docs/theory/10-blocks.md, 10.9 and 10.10; 20-stability.md, 20.13 */
+void kent_block_use_off(const kent_block *block, const kent_rules *rules,
+                        const kent_site *site, const kent_demand *demand,
+                        double axis_above, double use[KENT_SENSES])
 {
     const double weight = rules->concrete_unit_weight -
                           (block->submerged ? rules->water_unit_weight : 0.0);
@@ -265,18 +311,30 @@ void kent_block_use(const kent_block *block, const kent_rules *rules,
     const bool bearing = block->type == KENT_BLOCK_BEARING;
     const double plan = block->width * (base ? block->height : block->thickness);
     const double volume = bearing ? bearing_concrete(block, site) : block->volume;
+    const double soil = block->type == KENT_BLOCK_GRAVITY
+                            ? kent_gravity_prism(rules, site, plan, block->height)
+                            : 0.0;
 
     for (int s = 0; s < KENT_SENSES; s++) {
         use[s] = 0.0;
     }
     if (demand->load[KENT_SIDEWAYS] > 0.0) {
-        const double face = block->face.width * block->face.height - site->hole;
-        use[KENT_SIDEWAYS] = demand->load[KENT_SIDEWAYS] / (face * site->allowable);
+        const double bears = fmax(0.0, block->face.height - 2.0 * fabs(axis_above));
+        const double face = block->face.width * bears - site->hole;
+        use[KENT_SIDEWAYS] =
+            demand->load[KENT_SIDEWAYS] / (fmax(0.0, face) * site->allowable);
     }
     if (demand->load[KENT_UPWARD] > 0.0) {
-        use[KENT_UPWARD] = demand->load[KENT_UPWARD] / (volume * weight);
+        use[KENT_UPWARD] = demand->load[KENT_UPWARD] / (volume * weight + soil);
     }
     if (demand->load[KENT_DOWNWARD] > 0.0) {
         use[KENT_DOWNWARD] = demand->load[KENT_DOWNWARD] / (plan * site->vertical);
     }
+}
+
+void kent_block_use(const kent_block *block, const kent_rules *rules,
+                    const kent_site *site, const kent_demand *demand,
+                    double use[KENT_SENSES])
+{
+    kent_block_use_off(block, rules, site, demand, 0.0, use);
 }

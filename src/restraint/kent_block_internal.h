@@ -16,15 +16,16 @@ typedef struct kent_poured {
     double test[KENT_SENSES]; /* the same of the site test, or without one of all */
 } kent_poured;
 
-typedef struct kent_site {  /* what a block stands in; m, Pa */
-    double diameter;        /* outside, of the largest pipe */
-    double cover;           /* ground to crown; NAN: not stated */
-    double water_table;     /* below ground; INFINITY: none */
-    double allowable;       /* on a face at this depth; NAN: not known, as gap says */
-    double vertical;        /* under a base; NAN: not stated */
-    double hole;            /* m2 of a face that the pipe passes through; 0: none */
-    bool all_round;         /* a face on every side: it is pushed to all of them */
-    double falls;           /* rad, that the ground falls along the thrust; 0 */
+typedef struct kent_site { /* what a block stands in; m, Pa */
+    double diameter;       /* outside, of the largest pipe */
+    double cover;          /* ground to crown; NAN: not stated */
+    double water_table;    /* below ground; INFINITY: none */
+    double allowable;      /* on a face at this depth; NAN: not known, as gap says */
+    double vertical;       /* under a base; NAN: not stated */
+    double hole;           /* m2 of a face that the pipe passes through; 0: none */
+    bool all_round;        /* a face on every side: it is pushed to all of them */
+    double falls;          /* rad, that the ground falls along the thrust; 0 */
+    bool low; /* a gravity block here keeps as low as a face must, to be one itself */
     const kent_soil *soil;  /* NULL: not stated */
     const kent_soil *fill;  /* between face and ground; NULL: the face meets ground */
     const kent_soil *leans; /* whichever of them is weaker: what allowable is of */
@@ -40,13 +41,15 @@ typedef struct kent_demand {
 typedef enum kent_fault {
     KENT_FAULT_NONE,
     KENT_FAULT_COVER_UNSTATED,
-    KENT_FAULT_SHALLOW,  /* less cover than the rules' least */
-    KENT_FAULT_BEARING,  /* the soil's bearing is not known at this depth */
-    KENT_FAULT_FACE,     /* no face of the asked area at this depth */
-    KENT_FAULT_OBSTACLE, /* something stands in the ground that the face leans on */
-    KENT_FAULT_CONCRETE, /* the fitting would crush it on the contact that is stated */
-    KENT_FAULT_VOLUME,   /* larger than the rules let be sized */
-    KENT_FAULT_VERTICAL, /* a base, and no bearing under one */
+    KENT_FAULT_SHALLOW,   /* less cover than the rules' least */
+    KENT_FAULT_BEARING,   /* the soil's bearing is not known at this depth */
+    KENT_FAULT_FACE,      /* no face of the asked area at this depth */
+    KENT_FAULT_OBSTACLE,  /* something stands in the ground that the face leans on */
+    KENT_FAULT_CONCRETE,  /* the fitting would crush it on the contact that is stated */
+    KENT_FAULT_VOLUME,    /* larger than the rules let be sized */
+    KENT_FAULT_VERTICAL,  /* a base, and no bearing under one */
+    KENT_FAULT_STABILITY, /* it slides, overturns, floats or presses too hard, up to the
+                             largest that may be sized */
     KENT_FAULT_SOIL_UNSTATED,
     KENT_FAULT_ABOVE_GROUND, /* no soil is there to bear */
     KENT_FAULT_SLOPE, /* the ground before the face falls more than the rules allow */
@@ -80,14 +83,32 @@ double kent_site_concrete(const kent_site *site, const kent_rules *rules, double
 double kent_site_thickness(const kent_rules *rules, const kent_site *site,
                            kent_face side, kent_sense sense);
 
-/* m: height of a gravity block that would reach the ground's surface; NAN: no cover
- * stated. */
+/* m: height that a gravity block may have: it would reach the ground's surface, or of a
+ * low one, be too tall for a face; NAN: no cover stated. */
 double kent_gravity_most(const kent_rules *rules, const kent_site *site);
 
 /* m: side that a gravity block of a volume (m3) needs to be no taller than that; 0
  * where no cover is stated. source 10.14 */
 double kent_gravity_shallow(const kent_rules *rules, const kent_site *site,
                             double volume);
+
+/* m: least height of a block here. source 10.34 */
+double kent_block_least_height(const kent_rules *rules, const kent_site *site);
+
+/* N: soil that counts above a gravity block of a plan (m2) and height (m); 0 where the
+ * rules, or what is known of the soil, count none. source 20.4 */
+double kent_gravity_prism(const kent_rules *rules, const kent_site *site, double plan,
+                          double height);
+
+/* A gravity block for what lifts, and presses, it; the next larger one. source 10.13 ..
+ * 10.15, 20.14 */
+void kent_gravity_size(const kent_rules *rules, const kent_site *site,
+                       const kent_demand *demand, kent_block *out);
+void kent_gravity_widen(const kent_rules *rules, const kent_site *site,
+                        const kent_demand *demand, bool flatter, kent_block *b);
+
+/* Whether those rules ask for soil above, and all of it is known here. */
+bool kent_gravity_under_soil(const kent_rules *rules, const kent_site *site);
 
 /* What would let a face bear sideways (N) here: the least cover (m; NAN: none within
  * reach), and the least allowable bearing (Pa; NAN: no face fits at all). */
@@ -101,9 +122,21 @@ double kent_face_bearing_needed(const kent_rules *rules, const kent_site *site,
 kent_fault kent_block_size(const kent_rules *rules, const kent_site *site,
                            const kent_demand *demand, kent_block *out);
 
+/* The next larger block of the same kind: a gravity block's side (flatter: no heavier
+ * than it must be), both sides of a base, the thickness of a bearing block. Returns
+ * false, and leaves it, where that is larger than the rules let be sized. */
+bool kent_block_widen(const kent_rules *rules, const kent_site *site,
+                      const kent_demand *demand, bool flatter, kent_block *block);
+
 /* Factored load over resistance of each sense the block holds; 0 for the others. */
 void kent_block_use(const kent_block *block, const kent_rules *rules,
                     const kent_site *site, const kent_demand *demand,
                     double use[KENT_SENSES]);
+
+/* The same of a block as built, its face's centre below the pipe's axis by axis_above
+ * (m, negative: above it): less of the face bears. source 20.13 */
+void kent_block_use_off(const kent_block *block, const kent_rules *rules,
+                        const kent_site *site, const kent_demand *demand,
+                        double axis_above, double use[KENT_SENSES]);
 
 #endif

@@ -1,5 +1,6 @@
 #include "kent_concrete_internal.h"
 #include "kent_said.h"
+#include "kent_stability_internal.h"
 
 /* s: a peak this short loads a block like a knock. Common practice, no source. */
 static const double KNOCK = 0.1;
@@ -157,14 +158,12 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
                        "faces must reach undisturbed ground, not backfill");
     }
     if (w->demand.load[KENT_UPWARD] > 0.0) {
-        kent_notes_add(&h->cautions,
-                       "straps or rods from pipe to block must carry %s upwards",
-                       kent_said_of(KENT_FORCE, units, w->demand.load[KENT_UPWARD]).s);
         if (!w->soil) {
             kent_notes_add(&h->cautions,
                            "the soil under the gravity block is not stated");
         }
     }
+    kent_stability_caution(w, h);
     if (b->submerged) {
         kent_notes_add(&h->cautions,
                        "the block stands in ground water: its concrete is "

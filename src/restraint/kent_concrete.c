@@ -321,7 +321,7 @@ static kent_quantities quantities_of(const kent_holding_work *w, const kent_bloc
     const bool through = w->site.hole > 0.0;
     kent_quantities all = {0};
 
-    if (b->has_face) {
+    if (b->has_face && !b->own_side) {
         all = kent_quantity_face(b->face, b->face_thickness, axis, through);
     }
     switch (b->type) {

@@ -1,4 +1,5 @@
 #include "kent_concrete_internal.h"
+#include "kent_stability_internal.h"
 
 /* Loads nearer than this, relative, are a tie: the case listed first governs. */
 static const double TIE = 1e-12;
@@ -177,6 +178,7 @@ static void holding_block(kent_holding_work *w, kent_holding *h)
     if (w->fault == KENT_FAULT_NONE) {
         w->fault = kent_block_size(&w->m->rules, &w->site, &w->demand, &h->block);
     }
+    if (w->fault == KENT_FAULT_NONE) w->fault = kent_stability_settle(w, h);
     if (w->fault == KENT_FAULT_NONE && !kent_obstacle_clear(w, h)) {
         w->fault = KENT_FAULT_OBSTACLE;
     }

@@ -186,6 +186,9 @@ typedef struct kent_sound {
 /* The nearest, along the port's pipe, going out of the fitting. */
 kent_sound kent_leg_sound(const kent_model *m, const kent_port *port);
 
+/* N per m of empty pipe; NAN: not known. source 11.1 */
+double kent_leg_pipe_weight(const kent_pipe *p, double gravity);
+
 /* Fills the pieces of a leg from its demand, first in the ground of the fitting, then
  * in that of the zones its pipe passes, each as weak as the weakest ground along it.
  * Returns 0, or what is missing. */

@@ -5,7 +5,7 @@
 static const double PI = 3.14159265358979323846;
 
 /* N per m of empty pipe; NAN: not known. source 11.1 */
-static double pipe_weight(const kent_pipe *p, double gravity)
+double kent_leg_pipe_weight(const kent_pipe *p, double gravity)
 {
     const double mean = p->outside_diameter - p->wall;
     if (!isnan(p->unit_mass)) return p->unit_mass * gravity;
@@ -158,7 +158,7 @@ unsigned kent_piece_fill(const kent_model *m, const kent_leg_place *place,
         .fill = ground->backfill >= 0 ? &m->soils[ground->backfill] : soil,
         .pipe = pipe,
         .pipe_index = place->pipe,
-        .pipe_weight = pipe_weight(pipe, m->gravity),
+        .pipe_weight = kent_leg_pipe_weight(pipe, m->gravity),
         .trench_kind = ground->trench,
         .weakest = -1,
         .rise = place->rise,

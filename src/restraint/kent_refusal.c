@@ -1,5 +1,6 @@
 #include "kent_holding_internal.h"
 #include "kent_said.h"
+#include "kent_stability_internal.h"
 #include "kent_wedge.h"
 
 static const struct {
@@ -270,6 +271,19 @@ static void refuse_concrete(const kent_holding_work *w, const kent_holding *h,
         kent_said_of(KENT_AREA, units, c->contact_needed).s);
 }
 
+static void refuse_unstable(const kent_holding_work *w, const kent_holding *h,
+                            kent_text *t)
+{
+    char words[96];
+
+    kent_stability_says(&h->stability, words, sizeof words);
+    kent_text_add(t,
+                  "no block: at the largest that these rules let be sized, %s, it does "
+                  "not stay in place (%s); firmer ground, a structure of its own, or ",
+                  kent_said_of(KENT_VOLUME, w->m->units, w->m->rules.largest_volume).s,
+                  words);
+}
+
 static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          kent_text *t)
 {
@@ -345,6 +359,9 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         kent_text_add(t, "block and joints are asked for together, and not which part "
                          "of the thrust the block is for; give block_share");
         return;
+    case KENT_FAULT_STABILITY:
+        refuse_unstable(w, h, t);
+        break;
     case KENT_FAULT_FACE:
         refuse_face(w, h, t);
         return;

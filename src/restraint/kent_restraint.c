@@ -4,6 +4,7 @@
 #include "kent_pull_internal.h"
 #include "kent_space_internal.h"
 #include "kent_system_internal.h"
+#include "kent_stability_internal.h"
 
 #include <assert.h>
 #include <stdlib.h>
@@ -78,6 +79,7 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_policy(w, h);
         kent_concrete_prepare(w, h);
         kent_holding_size(w, h);
+        kent_stability_tell(w, h);
         kent_holding_routes(w, h);
         kent_holding_legs(w, h);
         kent_holding_footprint(w, h);

@@ -104,9 +104,12 @@ typedef struct kent_block {
     kent_face face;
     double face_thickness, face_utilisation;
     double face_volume; /* m3, not in volume; 0 without a face of its own */
-    bool own_side;    /* gravity: its own side is the face, which has no volume then */
-    int widened;      /* steps of the rules by which it was enlarged until it stands */
-    bool submerged;   /* gravity, base: weight less the water it displaces */
+    bool own_side;  /* gravity: its own side is the face, and face_thickness what stands
+                       between pipe and side */
+    bool low;       /* gravity: kept as low as a face must be, for that side */
+    int widened;    /* steps of the rules by which it was enlarged until it stands */
+    bool flatter;   /* gravity: widened to press less, no heavier than it must be */
+    bool submerged; /* gravity, base: weight less the water it displaces */
     kent_sense sense; /* that the body is for, its face apart; of utilisation */
 } kent_block;
 

@@ -73,6 +73,7 @@ typedef struct kent_stability {
     bool bearing_known;     /* under a base */
     double flotation[2];    /* factor, main empty and full; NAN: no ground water */
     double flotation_asked; /* 0: not asked */
+    double displaced;       /* m3 of water, by block and pipe */
     double pipe_length;     /* m of main counted with the block: its own length */
     bool pipe_weight_known; /* else the pipe counts as weighing nothing */
 } kent_stability;
