@@ -353,7 +353,7 @@ void kent_concrete_finish(const kent_holding_work *w, kent_holding *h)
     if (b->type == KENT_BLOCK_BASE) {
         check_width(w, KENT_DOWNWARD, plan, b->thickness, c);
     }
-    if (b->type == KENT_BLOCK_BEARING || b->has_face) {
+    if (b->type == KENT_BLOCK_BEARING || (b->has_face && !b->own_side)) {
         check_width(w, KENT_SIDEWAYS, b->face,
                     b->has_face ? b->face_thickness : b->thickness, c);
     }
