@@ -196,8 +196,9 @@ static void judge_rest(const kent_holding_work *w, const kent_block *b,
         .asked = pressure_asked(&w->m->rules, b),
         .load_case = -1,
     };
-    if (take_least(&out->pressure[KENT_AT_WORK], rest))
+    if (take_least(&out->pressure[KENT_AT_WORK], rest)) {
         out->base[KENT_AT_WORK] = p.base;
+    }
 }
 
 /* ---- flotation ------------------------------------------------------------------- */
