@@ -72,6 +72,8 @@ static kent_block built_block(const kent_holding_work *w, const kent_built *buil
     b.has_face = !own && built->face_width > 0.0;
     if (b.has_face) {
         b.face_volume = b.face.width * b.face.height * b.face_thickness;
+    } else if (type == KENT_BLOCK_GRAVITY) {
+        b.has_face = b.own_side = kent_block_side_bears(&w->m->rules, &w->site, &b);
     }
     const double deep =
         own || type == KENT_BLOCK_GRAVITY ? 0.5 * b.height : b.thickness;

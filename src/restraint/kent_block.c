@@ -152,8 +152,7 @@ static void base_size(const kent_rules *rules, const kent_site *site,
     out->volume = out->width * out->height * out->thickness;
 }
 
-/* The side of a gravity block as the face. source docs/theory/20-stability.md, 20.15 */
-static bool own_side_bears(const kent_rules *rules, const kent_site *site,
+bool kent_block_side_bears(const kent_rules *rules, const kent_site *site,
                            kent_block *out)
 {
     const double step = rules->side_step, slack = KENT_SIDE_SLACK * step;
@@ -194,7 +193,7 @@ static bool gravity_as_face(const kent_rules *rules, const kent_site *site,
     low.low = true;
     if (!(kent_gravity_most(rules, &low) >= site->diameter)) return false;
     kent_gravity_size(rules, &low, demand, &b);
-    if (!own_side_bears(rules, site, &b)) return false;
+    if (!kent_block_side_bears(rules, site, &b)) return false;
     b.has_face = true;
     b.own_side = true;
     b.face_volume = 0.0;
@@ -291,7 +290,7 @@ bool kent_block_widen(const kent_rules *rules, const kent_site *site,
     }
     }
     b.volume = b.width * b.height * b.thickness;
-    if (b.own_side && !own_side_bears(rules, site, &b)) { /* too flat by now */
+    if (b.own_side && !kent_block_side_bears(rules, site, &b)) { /* too flat by now */
         (void)face_size(rules, site, demand->load[KENT_SIDEWAYS], &b);
         face_beside(&b);
     }

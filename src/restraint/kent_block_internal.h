@@ -133,6 +133,12 @@ void kent_block_use(const kent_block *block, const kent_rules *rules,
                     const kent_site *site, const kent_demand *demand,
                     double use[KENT_SENSES]);
 
+/* Makes the side of a gravity block its face, if that serves: in ground that bears, no
+ * taller than a face may be, wide enough, and of bearing_area where that is known.
+ * Leaves *out where not. source docs/theory/20-stability.md, 20.15 */
+bool kent_block_side_bears(const kent_rules *rules, const kent_site *site,
+                           kent_block *out);
+
 /* The same of a block as built, its face's centre below the pipe's axis by axis_above
  * (m, negative: above it): less of the face bears. source 20.13 */
 void kent_block_use_off(const kent_block *block, const kent_rules *rules,
