@@ -195,9 +195,7 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
                        "the restrained length of a branch takes no credit "
                        "for the run, whose restrained length is not given");
     }
-    kent_notes_add(&h->cautions,
-                   "restrained length %s; joints and pipes must be rated for the "
-                   "governing pressure",
+    kent_notes_add(&h->cautions, "restrained length %s",
                    kent_leg_rule_of(w->fitting)->says);
 }
 

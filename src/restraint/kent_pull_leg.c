@@ -1,5 +1,6 @@
 /* Pipes behind restrained joints: whether they are rated for what comes, and the stress
  * that the thrust leaves along their walls. */
+#include "kent_along.h"
 #include "kent_pull_internal.h"
 #include "kent_said.h"
 
@@ -35,10 +36,10 @@ static kent_rating rating_asked(const kent_load_case *c)
     return KENT_RATING_SERVICE;
 }
 
-/* Pa, the highest of all senses; NAN: none set. */
+/* Pa, the highest of all senses, and of a march; NAN: none set. */
 static double pressure_of(const kent_load_case *c)
 {
-    double highest = NAN;
+    double highest = c->highest.set ? c->highest.pressure : NAN;
 
     for (int s = 0; s < KENT_SENSES; s++) {
         if (c->worst[s].set) highest = fmax(highest, c->worst[s].pressure);
@@ -46,53 +47,86 @@ static double pressure_of(const kent_load_case *c)
     return highest;
 }
 
-static void judge(const kent_model *m, const kent_pipe *p, const kent_load_case *c,
-                  const char *what, double rating, const char *key, kent_holding *h)
-{
-    const double pressure = pressure_of(c);
-    const kent_said reached = kent_said_of(KENT_PRESSURE, m->units, pressure);
+/* A part of the pipe that restrained joints hand the thrust on to. */
+typedef enum rated_part { RATED_JOINTS, RATED_WALLS } rated_part;
 
-    if (!(pressure > 0.0)) return;
-    if (isnan(rating)) {
+static double rating_of(const kent_pipe *p, rated_part part, const kent_load_case *c)
+{
+    return part == RATED_JOINTS ? p->joint_rating
+                                : kent_pipe_rating(p, rating_asked(c));
+}
+
+/* The case that comes nearest to a rating that is known, or goes furthest beyond it;
+ * or among those for which none is known the one with the highest pressure. A test
+ * without a rating of its own for it goes by what the joints are rated for. NULL: none.
+ */
+static const kent_load_case *harshest(const kent_pipe *p, rated_part part, bool known,
+                                      const kent_fitting_loads *loads)
+{
+    const kent_load_case *worst = NULL;
+    double most = 0.0;
+
+    for (size_t k = 0; k < loads->count; k++) {
+        const kent_load_case *c = &loads->cases[k];
+        const double rating = rating_of(p, part, c), pressure = pressure_of(c);
+        const double asks = known ? pressure / rating : pressure;
+        const bool test = part == RATED_WALLS && c->kind == KENT_CASE_TEST;
+        if (isnan(rating) == known || (test && !known) || !(asks > most)) continue;
+        most = asks;
+        worst = c;
+    }
+    return worst;
+}
+
+static void judge_part(const kent_model *m, const kent_pipe *p, rated_part part,
+                       const kent_fitting_loads *loads, kent_holding *h)
+{
+    const kent_load_case *unrated = harshest(p, part, false, loads);
+    const kent_load_case *rated = harshest(p, part, true, loads);
+    const char *what = part == RATED_JOINTS ? "the restrained joints" : "the walls";
+
+    if (unrated) {
         kent_notes_add(&h->cautions,
                        "no rating is stated for %s of pipe \"%s\", which must carry %s "
                        "before any factor in '%s': give its %s",
-                       what, p->id, reached.s, c->title.s, key);
-    } else if (pressure > rating * (1.0 + 1e-9)) {
-        kent_notes_add(&h->cautions,
-                       "%s of pipe \"%s\" are rated for %s, and '%s' brings %s before "
-                       "any factor: restrained they pull apart or break; use some that "
-                       "are rated for it",
-                       what, p->id, kent_said_of(KENT_PRESSURE, m->units, rating).s,
-                       c->title.s, reached.s);
+                       what, p->id,
+                       kent_said_of(KENT_PRESSURE, m->units, pressure_of(unrated)).s,
+                       unrated->title.s,
+                       part == RATED_JOINTS ? "joint_rating" : "pressure_rating");
     }
+    if (!rated) return;
+    const double rating = rating_of(p, part, rated), pressure = pressure_of(rated);
+    if (!(pressure > rating * (1.0 + 1e-9))) return;
+    kent_notes_add(&h->cautions,
+                   "%s of pipe \"%s\" are rated for %s, and '%s' brings %s before "
+                   "any factor: restrained they pull apart or break; use some that "
+                   "are rated for it",
+                   what, p->id, kent_said_of(KENT_PRESSURE, m->units, rating).s,
+                   rated->title.s, kent_said_of(KENT_PRESSURE, m->units, pressure).s);
 }
 
-/* A test without a rating of its own for it goes by what its joints are rated for. */
-static void judge_pipe(const kent_model *m, const kent_pipe *p, const kent_load_case *c,
-                       kent_holding *h)
+/* Every pipe that the leg runs along. */
+static void judge_leg(const kent_model *m, const kent_port *port, double reach,
+                      const kent_fitting_loads *loads, kent_holding *h)
 {
-    const kent_rating asked = rating_asked(c);
-    const double wall = kent_pipe_rating(p, asked);
+    kent_along way = kent_along_of(m, port);
+    double left = reach;
 
-    judge(m, p, c, "the restrained joints", p->joint_rating, "joint_rating", h);
-    if (asked == KENT_RATING_TEST && isnan(wall)) return;
-    judge(m, p, c, "the walls", wall, "pressure_rating", h);
+    do {
+        const kent_pipe *p = &m->pipes[way.pipe];
+        judge_part(m, p, RATED_JOINTS, loads, h);
+        judge_part(m, p, RATED_WALLS, loads, h);
+        left -= kent_along_left(m, way);
+    } while (left > KENT_SAME_PLACE && kent_along_on(m, way, &way));
 }
 
 void kent_pull_ratings(const kent_model *m, const kent_fitting *f,
                        const kent_fitting_loads *loads, kent_holding *h)
 {
-    if (!held_by_joints(h) || h->needs_nothing || h->governing < 0) return;
+    if (!held_by_joints(h) || h->needs_nothing) return;
     for (size_t i = 0; i < h->leg_count; i++) {
-        const kent_port *port = &m->ports[f->port_first + h->legs[i].port];
-        const kent_pipe *p = &m->pipes[m->spans[port->span].pipe];
-        judge_pipe(m, p, &loads->cases[h->governing], h);
-        for (size_t k = 0; k < loads->count; k++) {
-            const kent_load_case *c = &loads->cases[k];
-            if (c->kind != KENT_CASE_TEST || (int)k == h->governing) continue;
-            judge_pipe(m, p, c, h);
-        }
+        const kent_leg *leg = &h->legs[i];
+        judge_leg(m, &m->ports[f->port_first + leg->port], leg->reach, loads, h);
     }
 }
 

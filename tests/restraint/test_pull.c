@@ -494,6 +494,61 @@ static void joints_and_pipes_must_be_rated(void **state)
     work_clear(&w);
 }
 
+/* The test governs by its factor; still water, with less of one, presses more. */
+static void ratings_are_held_against_every_case(void **state)
+{
+    (void)state;
+    kent_build b = restrained_bend();
+    b.model->fixed_levels[0].level = 150.0; /* 14.7 bar */
+    b.model->loads.test_pressure = 12e5;
+    b.model->loads.factor[KENT_CASE_TEST] = 3.0;
+    b.model->loads.factor[KENT_CASE_STATIC] = 1.0;
+    b.model->loads.factor[KENT_CASE_STEADY] = 1.0;
+    b.model->pipes[0].joint_rating = 13e5;
+    b.model->pipes[0].pressure_rating = 14e5;
+    b.model->pipes[0].test_rating = 13e5;
+    work w = work_of(b);
+    const kent_holding *h = &w.r->fittings[kent_build_fitting_of(&w.net.build, "B")];
+    const kent_fitting_loads *loads =
+        &w.net.loads->fittings[kent_build_fitting_of(&w.net.build, "B")];
+    assert_string_equal(loads->cases[h->governing].name, "test");
+    assert_true(kent_hand_says(h, "the restrained joints of pipe \"A\" are rated for "
+                                  "13.00 bar, and 'static' brings 14.7"));
+    assert_true(kent_hand_says(h, "the walls of pipe \"A\" are rated for 14.00 bar, "
+                                  "and 'static' brings 14.7"));
+    work_clear(&w);
+
+    b = restrained_bend();
+    b.model->fixed_levels[0].level = 150.0;
+    b.model->loads.test_pressure = 12e5;
+    b.model->loads.factor[KENT_CASE_TEST] = 3.0;
+    w = work_of(b);
+    h = &w.r->fittings[kent_build_fitting_of(&w.net.build, "B")];
+    assert_true(kent_hand_says(h, "the restrained joints of pipe \"A\", which must "
+                                  "carry 14.7"));
+    work_clear(&w);
+}
+
+/* The leg beyond B runs on into a pipe of the same size made for less. */
+static void every_pipe_along_a_leg_must_be_rated(void **state)
+{
+    (void)state;
+    kent_build b = restrained_bend();
+    (void)kent_build_point(&b, "F", 500.0, 900.0, 0.0);
+    b.model->points[2].at.y = 2.0;
+    const int next = kent_build_pipe(&b, "N", "E F", 0.3, 1000.0);
+    b.model->pipes[next].material_density = 7050.0;
+    b.model->pipes[next].joint_rating = 10e5;
+    b.model->pipes[next].pressure_rating = 25e5;
+    b.model->pipes[0].joint_rating = 25e5;
+    b.model->pipes[0].pressure_rating = 25e5;
+    work w = work_of(b);
+    const kent_holding *h = &w.r->fittings[kent_build_fitting_of(&w.net.build, "B")];
+    assert_true(kent_hand_says(h, "the restrained joints of pipe \"N\" are rated for"));
+    assert_false(kent_hand_says(h, "pipe \"A\" are rated for"));
+    work_clear(&w);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -517,6 +572,8 @@ int main(void)
         cmocka_unit_test(every_refused_allocation_is_reported),
         cmocka_unit_test(thrust_leaves_a_stress_along_the_wall),
         cmocka_unit_test(joints_and_pipes_must_be_rated),
+        cmocka_unit_test(ratings_are_held_against_every_case),
+        cmocka_unit_test(every_pipe_along_a_leg_must_be_rated),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
