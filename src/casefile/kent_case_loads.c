@@ -3,6 +3,8 @@
 
 #include <assert.h>
 #include <math.h>
+#include <stdio.h>
+#include <string.h>
 
 /* In the order of kent_case_kind. */
 static const char *const FACTORS[] = {"test",        "static",    "steady",
@@ -116,6 +118,135 @@ static void fill_test(kent_filling *f, kent_record *r)
     if (r->sound) assume_test(f, r);
 }
 
+/* ---- bearing, area, cooling, waivers ----------------------------------------------
+ */
+
+static void fill_increases(kent_filling *f, const kent_record *loads)
+{
+    kent_record r;
+    kent_loads *l = &f->model->loads;
+    if (!kent_fill_group(f, loads, "bearing_increase", &r)) return;
+    for (size_t i = 0; i < sizeof FACTORS / sizeof FACTORS[0]; i++) {
+        if (!kent_record_has(&r, FACTORS[i])) continue;
+        l->bearing_increase[i] = kent_record_number(&r, FACTORS[i]);
+        kent_notes_add(&f->model->cautions,
+                       "soil is let bear %.2f times as much in load cases of kind %s, "
+                       "as the case says: that is the soil engineer's to allow",
+                       l->bearing_increase[i], FACTORS[i]);
+    }
+}
+
+static void fill_area(kent_filling *f, kent_record *r)
+{
+    const kent_model *m = f->model;
+    const int area = kent_record_field(r, "thrust_area")->index;
+    if (area >= 0) f->model->loads.thrust_area = (kent_thrust_area)area;
+    for (size_t i = 0; area == KENT_AREA_NOMINAL && i < m->pipe_count; i++) {
+        if (!isnan(m->pipes[i].nominal_size)) continue;
+        kent_record_complain(&f->reader, r, "thrust_area",
+                             "thrust_area \"nominal\" needs the nominal_size of pipe "
+                             "\"%s\"; give it, or take \"outside\"",
+                             m->pipes[i].id);
+        return;
+    }
+}
+
+/* What the catalogue says of a pipe that cools, where the case does not. */
+static void assume_material(kent_filling *f, const kent_pipe *p)
+{
+    const kent_material *row = kent_catalogue_material(f->catalogue, p->material);
+    const struct {
+        const char *what;
+        double used, own;
+        kent_kind kind;
+    } values[] = {
+        {"thermal expansion", p->expansion, row ? row->expansion : NAN, KENT_EXPANSION},
+        {"long-term modulus", p->long_modulus, row ? row->long_modulus : NAN,
+         KENT_MODULUS}};
+    for (size_t i = 0; row && i < sizeof values / sizeof values[0]; i++) {
+        char what[96];
+        char why[260];
+        if (isnan(values[i].own) || fabs(values[i].used - values[i].own) > 0.0)
+            continue;
+        (void)snprintf(what, sizeof what, "%s of %s", values[i].what, row->id);
+        (void)snprintf(why, sizeof why, "catalogue (%s): %s", row->from.status,
+                       row->from.source);
+        kent_fill_assume_value(f, what, values[i].used, values[i].kind, why);
+    }
+}
+
+static void fill_cooling(kent_filling *f, kent_record *r)
+{
+    const kent_model *m = f->model;
+    f->model->loads.cooling = kent_record_number(r, "cooling");
+    if (!kent_record_has(r, "cooling")) return;
+    for (size_t i = 0; i < m->pipe_count; i++) {
+        const kent_pipe *p = &m->pipes[i];
+        if (p->joint != KENT_FUSED && p->joint != KENT_WELDED) continue;
+        if (isnan(p->expansion)) {
+            kent_record_complain(&f->reader, r, "cooling",
+                                 "cooling needs the expansion of pipe \"%s\", which is "
+                                 "fused or welded; give it, or its material",
+                                 p->id);
+            return;
+        }
+        assume_material(f, p);
+    }
+}
+
+/* One pair (what, reason). */
+static bool fill_waiver(kent_filling *f, kent_record *r, const kent_twig *pair,
+                        size_t number, kent_waiver *out)
+{
+    static const char *const WORDS[] = {"test", "static", "shut-off", "surge"};
+    const bool is_pair =
+        kent_twig_type_of(pair) == KENT_TWIG_LIST && kent_twig_count(pair) == 2;
+    const char *what = is_pair ? kent_twig_text(kent_twig_child(pair, 0)) : NULL;
+    const char *reason = is_pair ? kent_twig_text(kent_twig_child(pair, 1)) : NULL;
+    bool known = false;
+    for (size_t i = 0; what && i < sizeof WORDS / sizeof WORDS[0]; i++) {
+        known = known || strcmp(what, WORDS[i]) == 0;
+    }
+    if (!known || !reason || reason[0] == '\0' ||
+        strlen(reason) >= sizeof out->reason) {
+        kent_record_complain(
+            &f->reader, r, "waived",
+            "element %zu of waived must be a pair of a load case, test, "
+            "static, shut-off or surge, and the reason, of up to %zu "
+            "bytes, as ( \"shut-off\", \"no pump\" )",
+            number, sizeof out->reason - 1);
+        return false;
+    }
+    (void)snprintf(out->what, sizeof out->what, "%s", what);
+    (void)snprintf(out->reason, sizeof out->reason, "%s", reason);
+    out->place = r->place;
+    return true;
+}
+
+static void fill_waivers(kent_filling *f, kent_record *r)
+{
+    kent_model *m = f->model;
+    const kent_twig *list = kent_record_field(r, "waived")->twig;
+    const size_t count = list ? kent_twig_count(list) : 0;
+    if (count == 0) return;
+    m->waivers = kent_alloc(count, sizeof *m->waivers);
+    if (!m->waivers) {
+        f->reader.failed = true;
+        return;
+    }
+    for (size_t i = 0; i < count; i++) {
+        kent_waiver *w = &m->waivers[i];
+        if (!fill_waiver(f, r, kent_twig_child(list, i), i + 1, w)) return;
+        for (size_t k = 0; k < i; k++) {
+            if (strcmp(m->waivers[k].what, w->what) != 0) continue;
+            kent_record_complain(&f->reader, r, "waived",
+                                 "waived names \"%s\" twice; keep one", w->what);
+            return;
+        }
+        m->waiver_count++;
+    }
+}
+
 /* ---- all --------------------------------------------------------------------------
  */
 
@@ -154,4 +285,8 @@ void kent_fill_loads(kent_filling *f)
     f->model->loads.static_level = kent_record_number(&r, "static_level");
     fill_test(f, &r);
     fill_future(f, &r);
+    fill_increases(f, &r);
+    fill_area(f, &r);
+    fill_cooling(f, &r);
+    fill_waivers(f, &r);
 }

@@ -80,6 +80,10 @@ static void fill_material(kent_filling *f, kent_record *record,
         kent_record_number_or(record, "poisson_ratio", row ? row->poisson : NAN);
     p->material_density = row ? row->density : NAN;
     p->lining_modulus = row && p->lining > 0.0 ? row->lining_modulus : 0.0;
+    p->expansion =
+        kent_record_number_or(record, "expansion", row ? row->expansion : NAN);
+    p->long_modulus =
+        kent_record_number_or(record, "long_modulus", row ? row->long_modulus : NAN);
     if (!record->sound || !isnan(p->wave_speed)) return;
     if (isnan(p->modulus) || isnan(p->poisson)) {
         kent_record_complain(&f->reader, record, NULL,
@@ -293,6 +297,9 @@ void kent_fill_pipe(kent_filling *f, kent_record *record, size_t index)
     p->loss = kent_record_number_or(record, "loss", 0.0);
     p->thin_wall = kent_record_field(record, "wall_theory")->index == 1;
     p->branch_turn = kent_record_number(record, "branch_turn");
+    p->above_ground = kent_record_switch(record, "above_ground", false);
+    p->nominal_size =
+        kent_record_number_or(record, "nominal_size", row ? row->nominal_size : NAN);
     kent_fill_ratings(f, record, row, material, p);
     fill_creep(f, record, material, p);
     kent_fill_standard(f, record, row, p);

@@ -20,6 +20,7 @@ typedef struct kent_pipe_class {
     double surge_rating;     /* Pa, service and surge together, occasional; NAN */
     double recurring_rating; /* Pa, the same for surges that recur; NAN */
     double test_rating;      /* Pa, under the site test; NAN */
+    double nominal_size;     /* m */
     kent_provenance from;
 } kent_pipe_class;
 
@@ -33,7 +34,9 @@ typedef struct kent_derating {
 typedef struct kent_material {
     char id[KENT_ID];                            /* "ductile-iron" */
     double modulus, poisson, density, roughness; /* Pa, -, kg/m3, m */
-    double lining_modulus;                       /* Pa, of its usual lining; 0 */
+    double expansion;                            /* 1/K of length; NAN */
+    double long_modulus;   /* Pa, of a plastic under lasting load; NAN */
+    double lining_modulus; /* Pa, of its usual lining; 0 */
     bool plastic;
     kent_creep creep[KENT_CREEP_ROWS]; /* [creep_count] */
     size_t creep_count;

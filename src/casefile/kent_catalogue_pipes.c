@@ -138,6 +138,7 @@ static bool add_pipe(kent_reader *r, const standard *s, const double *row,
         c->pipe_count--;
         return false;
     }
+    p->nominal_size = row[0] * s->unit;
     p->outside_diameter = row[1] * s->unit;
     p->lining = row[2] * s->unit;
     set_walls(s, row[0], wall, p);

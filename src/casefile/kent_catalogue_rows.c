@@ -55,6 +55,8 @@ void kent_catalogue_add_material(kent_reader *r, kent_record *record, kent_catal
         .poisson = kent_record_number(record, "poisson_ratio"),
         .density = kent_record_number(record, "density"),
         .roughness = kent_record_number(record, "roughness"),
+        .expansion = kent_record_number(record, "expansion"),
+        .long_modulus = kent_record_number(record, "long_modulus"),
         .lining_modulus = kent_record_number_or(record, "lining_modulus", 0.0),
         .creep_temperature = kent_record_number(record, "creep_temperature"),
         .plastic = kent_record_switch(record, "plastic", false),

@@ -255,13 +255,22 @@ static bool fittings_are_valid(const kent_model *m)
     return true;
 }
 
+static bool loads_are_valid(const kent_model *m)
+{
+    const kent_loads *l = &m->loads;
+    for (size_t i = 0; i < sizeof l->bearing_increase / sizeof l->bearing_increase[0];
+         i++) {
+        if (!(l->bearing_increase[i] >= 1.0)) return false;
+    }
+    return is_index_or_none(l->test_gauge, m->point_count) &&
+           is_index_or_none(l->future_gauge, m->point_count) && !(l->cooling < 0.0);
+}
+
 bool kent_model_is_valid(const kent_model *m)
 {
     return is_positive(m->water.density) && is_positive(m->water.bulk_modulus) &&
            is_positive(m->water.viscosity) && is_positive(m->gravity) &&
-           is_positive(m->barometric) &&
-           is_index_or_none(m->loads.test_gauge, m->point_count) &&
-           is_index_or_none(m->loads.future_gauge, m->point_count) &&
+           is_positive(m->barometric) && loads_are_valid(m) &&
            are_indices(m->members, m->member_count, m->point_count) &&
            are_indices(m->together, m->together_count, m->point_count) &&
            are_indices(m->closes, m->closes_count, m->point_count) &&

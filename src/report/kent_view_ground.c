@@ -241,6 +241,33 @@ static void add_factors(const kent_view *v, kent_text *out)
     kent_text_add(out, ". Design rules: %s.", v->model->rules.id);
 }
 
+/* What the case decides of thrusts and soils, and does without. */
+static void add_choices(const kent_view *v, kent_text *out)
+{
+    static const char *const CASES[] = {"test",        "static",    "steady",
+                                        "shut-off",    "recurring", "occasional",
+                                        "exceptional", "suction"};
+    const kent_model *m = v->model;
+    const kent_loads *l = &m->loads;
+    for (size_t i = 0; i < sizeof CASES / sizeof CASES[0]; i++) {
+        if (!(l->bearing_increase[i] > 1.0)) continue;
+        kent_text_add(out, " Soil bears %.2f times as much, %s.",
+                      l->bearing_increase[i], CASES[i]);
+    }
+    if (l->thrust_area != KENT_AREA_OUTSIDE) {
+        kent_text_add(out, " Thrusts on the %s, not the outside diameter.",
+                      l->thrust_area == KENT_AREA_INSIDE ? "bore" : "nominal size");
+    }
+    if (isfinite(l->cooling)) {
+        kent_text_add(out, " Fused and welded mains cool by %s.",
+                      kent_shown_with_unit(KENT_WARMING, v->units, l->cooling).text);
+    }
+    for (size_t i = 0; i < m->waiver_count; i++) {
+        kent_text_add(out, " Done without %s: %s.", m->waivers[i].what,
+                      m->waivers[i].reason);
+    }
+}
+
 /* "Lowest pressure asked: steady 1.40 bar, ...; life 50 years." Nothing where nobody
  * asks. */
 static void add_lowest(const kent_view *v, kent_text *out)
@@ -315,6 +342,7 @@ void kent_view_loads(const kent_view *v)
                       kent_view_point(v->model, l->future_gauge));
     }
     add_factors(v, &words);
+    add_choices(v, &words);
     add_lowest(v, &words);
     add_rated(v, &words);
     kent_view_say(v, "", &words);

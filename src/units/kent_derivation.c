@@ -60,7 +60,11 @@ static const char *coherent_unit(kent_kind kind, kent_system system, double *wor
         *worth = DEGREE;
         return "deg";
     }
-    if (kind == KENT_TEMPERATURE) { /* absolute, so that a formula needs no offset */
+    if (kind == KENT_EXPANSION) {
+        *worth = system == KENT_US ? 9.0 / 5.0 : 1.0;
+        return system == KENT_US ? "1/degR" : "1/K";
+    }
+    if (kind == KENT_TEMPERATURE || kind == KENT_WARMING) { /* absolute: no offset */
         *worth = system == KENT_US ? 5.0 / 9.0 : 1.0;
         return system == KENT_US ? "degR" : "K";
     }

@@ -131,6 +131,9 @@ static const unit_size UNIT_SIZES[] = {
     {"lb/ft3", 0.45359237 / 0.028316846592, 0.0},
     {"mPa s", 0.001, 0.0},
     {"cP", 0.001, 0.0},
+    {"K", 1.0, 0.0},
+    {"degR", 1.0 / 1.8, 0.0},
+    {"1/MK", 1e-6, 0.0},
     {"degC", 1.0, 273.15},
     {"degF", 1.0 / 1.8, 459.67 / 1.8},
     {"deg", 0.017453292519943295, 0.0},
@@ -391,6 +394,15 @@ static kent_status learn(kent_units *u, const char *text, const char *unit,
         goto done;
     }
     fresh.to_si = ut_get_converter(parsed, u->si[kind]);
+    if (kind == KENT_WARMING && fresh.to_si &&
+        fabs(cv_convert_double(fresh.to_si, 0.0)) > 0.0) {
+        status = kent_error_set(err, KENT_E_INPUT, "",
+                                "'%.80s' is a place on a scale of temperatures where a "
+                                "change of temperature belongs; write for instance %s: "
+                                "1 K is 1 degC of change, 1 degR 1 degF",
+                                text, such_as);
+        goto done;
+    }
     fresh.text = kent_copy_text(unit);
     if (!fresh.to_si || !fresh.text ||
         kent_grow(&array, &u->known_capacity, u->known_count + 1, sizeof *u->known) !=

@@ -35,6 +35,10 @@
       "1.14 cP")                                                                       \
     X(KENT_TEMPERATURE, "a temperature", "K", "degC", 1, "degF", 0, "12 degC",         \
       "54 degF")                                                                       \
+    X(KENT_WARMING, "a change of temperature", "K", "K", 1, "degR", 1, "12 K",         \
+      "22 degR")                                                                       \
+    X(KENT_EXPANSION, "a thermal expansion", "1/K", "1/MK", 1, "1/MK", 1, "12e-6 1/K", \
+      "6.5e-6 1/degR")                                                                 \
     X(KENT_ANGLE, "an angle", "rad", "deg", 1, "deg", 1, "22.5 deg", "22.5 deg")       \
     X(KENT_ROTATION, "a rotation speed", "radian/s", "rpm", 0, "rpm", 0, "1480 rpm",   \
       "1770 rpm")                                                                      \

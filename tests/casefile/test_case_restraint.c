@@ -183,6 +183,59 @@ static void pieces_in_line_are_types_of_a_case(void **state)
     kent_catalogue_free(c);
 }
 
+/* ---- loads and pipes ------------------------------------------------------------- */
+
+#define LOADS_KEY "loads = {"
+
+static void loads_say_what_bears_more_and_what_is_left_out(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m =
+        with(c, LOADS_KEY,
+             LOADS_KEY " bearing_increase = { occasional = 1.33; }; thrust_area = "
+                       "\"nominal\"; cooling = \"9 degR\"; waived = ( ( \"shut-off\", "
+                       "\"no pump\" ), ( \"test\", \"old main\" ) );");
+    const kent_loads *l = &m->loads;
+    assert_close(l->bearing_increase[KENT_CASE_OCCASIONAL], 1.33, 1e-15);
+    assert_close(l->bearing_increase[KENT_CASE_TEST], 1.0, 1e-15);
+    assert_int_equal(cautions_with(m, "soil is let bear 1.33 times as much"), 1);
+    assert_int_equal(l->thrust_area, KENT_AREA_NOMINAL);
+    assert_close(m->pipes[0].nominal_size, 0.3, 1e-15); /* DN300 */
+    assert_close(l->cooling, 5.0, 1e-12);
+    assert_int_equal(m->waiver_count, 2);
+    assert_string_equal(m->waivers[0].what, "shut-off");
+    assert_string_equal(m->waivers[1].reason, "old main");
+    kent_model_free(m);
+    m = with(c, LOADS_KEY, LOADS_KEY);
+    assert_int_equal(m->loads.thrust_area, KENT_AREA_OUTSIDE);
+    assert_true(isnan(m->loads.cooling));
+    assert_false(m->pipes[0].above_ground);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
+static void a_pipe_cools_by_its_material_unless_it_says_otherwise(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    char *text = replaced(DESIGN_CASE, LOADS_KEY, LOADS_KEY " cooling = \"12 K\";");
+    char *pipe =
+        replaced(text, "\"DI-EN545-C40-DN300\"; joint = \"push-on\";",
+                 "\"PE100-SDR11-DN315\"; joint = \"fused\"; above_ground = true; "
+                 "long_modulus = \"0.25 GPa\";");
+    kent_model *m = read_sound(c, pipe);
+    assert_close(m->pipes[0].expansion, 180e-6, 1e-12);
+    assert_close(m->pipes[0].long_modulus, 0.25e9, 1e-12);
+    assert_true(m->pipes[0].above_ground);
+    assert_non_null(assumed(m, "thermal expansion of PE100"));
+    assert_null(assumed(m, "long-term modulus of PE100")); /* the case's own */
+    kent_model_free(m);
+    free(pipe);
+    free(text);
+    kent_catalogue_free(c);
+}
+
 /* ---- the project ----------------------------------------------------------------- */
 
 static void a_project_has_a_utility_and_a_date(void **state)
@@ -207,6 +260,8 @@ int main(void)
         cmocka_unit_test(a_fitting_has_what_is_stated_for_its_restraint),
         cmocka_unit_test(a_tee_has_its_run_and_the_legs_that_can_be_shut),
         cmocka_unit_test(pieces_in_line_are_types_of_a_case),
+        cmocka_unit_test(loads_say_what_bears_more_and_what_is_left_out),
+        cmocka_unit_test(a_pipe_cools_by_its_material_unless_it_says_otherwise),
         cmocka_unit_test(a_project_has_a_utility_and_a_date),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

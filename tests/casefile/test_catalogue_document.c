@@ -192,9 +192,11 @@ static void add_pipes(kent_text *out, const kent_catalogue *c)
 
 static void add_materials(kent_text *out, const kent_catalogue *c)
 {
-    kent_text_add(out, "\n## Materials\n\n| id | modulus, GPa | Poisson | density, "
-                       "kg/m³ | roughness, mm | lining's modulus, GPa | source | "
-                       "status |\n| --- | --- | --- | --- | --- | --- | --- | --- |\n");
+    kent_text_add(out,
+                  "\n## Materials\n\n| id | modulus, GPa | Poisson | density, "
+                  "kg/m³ | roughness, mm | lining's modulus, GPa | expansion, 1e-6/K | "
+                  "lasting modulus, GPa | source | status |\n| --- | --- | --- | --- "
+                  "| --- | --- | --- | --- | --- | --- |\n");
     for (size_t i = 0; i < c->material_count; i++) {
         const kent_material *m = &c->materials[i];
         kent_text_add(out, "| `%s` |", m->id);
@@ -204,6 +206,8 @@ static void add_materials(kent_text *out, const kent_catalogue *c)
         add_number(out, m->roughness / MM, 4);
         add_number(out, m->lining_modulus > 0.0 ? m->lining_modulus / 1e9 : (double)NAN,
                    4);
+        add_number(out, m->expansion / 1e-6, 4);
+        add_number(out, m->long_modulus / 1e9, 3);
         kent_text_add(out, " %s | %s |\n", m->from.source, m->from.status);
     }
     kent_text_add(out,

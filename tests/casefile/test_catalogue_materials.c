@@ -157,9 +157,41 @@ static void pvc_creeps_with_the_logarithm_of_time(void **state)
     kent_catalogue_free(c);
 }
 
+/* Expansion of length and modulus after 50 years: usual handbook values, from memory
+ * (ductile iron 6.2e-6 per degF, steel 12e-6 of EN 1993-1-1, PVC 3e-5 and PE 8e-5 per
+ * degF; PE4710 29 ksi of the Plastics Pipe Institute, PE100 0.2 GPa). */
+static void materials_expand_and_yield_as_handbooks_have_it(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *id;
+        double expansion, modulus; /* 1e-6/K, GPa; 0: none */
+    } ROWS[] = {{"ductile-iron", 6.2 * 1.8, 0.0},
+                {"grey-iron", 10.5, 0.0},
+                {"steel", 12.0, 0.0},
+                {"PVC-U", 80.0, 1.5},
+                {"PVC-12454", 30.0 * 1.8, 1.5},
+                {"PE100", 180.0, 0.2},
+                {"PE4710", 80.0 * 1.8, 29.0 * 6.894757293168e-3},
+                {"asbestos-cement", 8.0, 0.0},
+                {"concrete", 10.0, 0.0}};
+    kent_catalogue *c = read_catalogue();
+    assert_int_equal(c->material_count, sizeof ROWS / sizeof ROWS[0]);
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        const kent_material *m = kent_catalogue_material(c, ROWS[i].id);
+        assert_close(m->expansion, ROWS[i].expansion * 1e-6, 0.005);
+        assert_int_equal(isnan(m->long_modulus), ROWS[i].modulus <= 0.0);
+        if (ROWS[i].modulus > 0.0) {
+            assert_close(m->long_modulus, ROWS[i].modulus * 1e9, 1e-9);
+        }
+    }
+    kent_catalogue_free(c);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(materials_expand_and_yield_as_handbooks_have_it),
         cmocka_unit_test(materials_have_the_usual_values),
         cmocka_unit_test(plastics_are_weaker_when_warm),
         cmocka_unit_test(pe100_creeps_as_a_laboratory_pipe_did),

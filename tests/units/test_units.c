@@ -208,7 +208,12 @@ static void every_kind_refuses_the_examples_of_every_other(void **state)
                 const char *text = kent_kind_example((kent_kind)b, (kent_system)s);
                 if (strcmp(kent_kind_si((kent_kind)a), kent_kind_si((kent_kind)b)) ==
                     0) {
-                    (void)read_si(text, (kent_kind)a);
+                    const bool scale = a == KENT_WARMING && b == KENT_TEMPERATURE;
+                    if (scale) {
+                        assert_refused(text, KENT_WARMING, "is a place on a scale");
+                    } else {
+                        (void)read_si(text, (kent_kind)a);
+                    }
                     continue;
                 }
                 assert_refused(text, (kent_kind)a, "for instance");
@@ -251,6 +256,22 @@ static void units_that_only_look_alike_are_refused(void **state)
     assert_refused("1 N m", KENT_FORCE, "is a moment where a force belongs");
     assert_refused("1 psi head", KENT_PRESSURE, "is not a pressure");
     assert_refused("1 m rad", KENT_LENGTH, "is not a length");
+}
+
+/* 1 K is 1.8 degrees of Rankine and of Fahrenheit (NIST SP 811, B.8). */
+static void a_change_of_temperature_is_no_temperature(void **state)
+{
+    (void)state;
+    assert_within(read_si("12 K", KENT_WARMING), 12.0, 1e-12);
+    assert_within(read_si("18 degR", KENT_WARMING), 10.0, 1e-12);
+    assert_within(read_si("1.8e-6 1/K", KENT_EXPANSION), 1.8e-6, 1e-18);
+    assert_within(read_si("1e-6 1/degR", KENT_EXPANSION), 1.8e-6, 1e-18);
+    assert_refused(
+        "12 degC", KENT_WARMING,
+        "'12 degC' is a place on a scale of temperatures where a change of "
+        "temperature belongs; write for instance \"12 K\" or \"22 degR\": 1 K "
+        "is 1 degC of change, 1 degR 1 degF");
+    assert_refused("20 degF", KENT_WARMING, "is a place on a scale");
 }
 
 static void absolute_pressures_are_refused_by_name(void **state)
@@ -430,6 +451,7 @@ int main(void)
         cmocka_unit_test(every_kind_refuses_the_examples_of_every_other),
         cmocka_unit_test(the_wrong_kind_is_named_with_the_right_one_and_examples),
         cmocka_unit_test(units_that_only_look_alike_are_refused),
+        cmocka_unit_test(a_change_of_temperature_is_no_temperature),
         cmocka_unit_test(absolute_pressures_are_refused_by_name),
         cmocka_unit_test(a_bare_number_is_only_a_ratio),
         cmocka_unit_test(wrong_looking_texts_are_refused),
