@@ -118,7 +118,7 @@ static bool judge_ground(const kent_holding_work *w, const kent_holding *h,
     work.clear = (kent_notes){0};
     work.obstacle = NULL;
     built.block = *block;
-    if (kent_holding_ground_fault(w) != KENT_FAULT_NONE) {
+    if (kent_holding_ground_fault(w, h) != KENT_FAULT_NONE) {
         kent_notes_add(notes,
                        "the ground before the face falls, or is fill, so that the "
                        "rules let no block lean on it");

@@ -100,7 +100,8 @@ static double bearing_passive(const kent_soil *soil, kent_way way,
         return NAN;
     }
     if (isnan(coefficient)) {
-        *gap = at->falls > 0.0 ? KENT_BEARING_FALLS : KENT_BEARING_LACKS;
+        const bool falls = isnan(kent_way_passive(soil, KENT_WAY_RANKINE, at->falls));
+        *gap = falls ? KENT_BEARING_FALLS : KENT_BEARING_NO_PLANE;
         return NAN;
     }
     return soil->passive_share *

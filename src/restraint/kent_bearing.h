@@ -11,6 +11,8 @@ typedef enum kent_bearing_gap {
     KENT_BEARING_NO_DEPTH,    /* it goes with depth, and the depth is not known */
     KENT_BEARING_ABOVE_TABLE, /* shallower than the first row of its table */
     KENT_BEARING_LACKS,       /* unit weight, friction angle or cohesion */
+    KENT_BEARING_NO_PLANE,    /* so much rubs on the face that Coulomb's plane has no
+                                 passive pressure */
     KENT_BEARING_FALLS        /* the ground falls, and no friction angle tells how much
                                  that takes, or it falls as steeply as that */
 } kent_bearing_gap;

@@ -1,5 +1,6 @@
 /* The block's part of a hand calculation: depths, areas, sides, what is reached. */
 #include "kent_concrete_internal.h"
+#include "kent_earth.h"
 #include "kent_side_internal.h"
 #include "kent_stability_internal.h"
 #include "kent_wedge.h"
@@ -161,8 +162,15 @@ static void derive_wedge(const kent_holding_work *w, kent_derivation *d)
         kent_derivation_put(d, "phi", phi, KENT_ANGLE, kent_soil_source(w->soil),
                             "friction angle of the soil");
     }
-    kent_derivation_work(d, "R", w->reach, KENT_LENGTH, "base*tan(45 + phi/2)", "10.25",
-                         "wedge of ground before the face, at the surface");
+    const bool rubs = kent_soil_way(w->soil) == KENT_WAY_COULOMB && !isnan(phi);
+    if (rubs) {
+        kent_derivation_put(d, "psi", kent_passive_plane(phi, w->soil->wall_friction),
+                            KENT_ANGLE, KENT_COMPUTED,
+                            "plane that the wedge slides up along (21.13)");
+    }
+    kent_derivation_work(
+        d, "R", w->reach, KENT_LENGTH, rubs ? "base/tan(psi)" : "base*tan(45 + phi/2)",
+        rubs ? "21.13" : "10.25", "wedge of ground before the face, at the surface");
 }
 
 /* The side of the gravity block above, as the face. */

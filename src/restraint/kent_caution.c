@@ -66,6 +66,7 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
     kent_text t = {0};
 
     if (!s || !kent_bearing_claims(s, &at, &claim)) return;
+    if (kent_soil_way(s) == KENT_WAY_COULOMB) return; /* told with what rubs */
     if (!(claim.passive > KENT_PASSIVE_UNLIKELY)) return;
     kent_text_add(
         &t, "soil '%s': %s at this depth asks for a passive coefficient of %.1f", s->id,
@@ -95,6 +96,7 @@ static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
     const kent_bearing_place at = kent_site_place(&w->site, &w->m->rules);
 
     if (!s || h->by_sense[KENT_SIDEWAYS] < 0) return;
+    if (kent_soil_way(s) == KENT_WAY_COULOMB) return; /* which knows of more strength */
     const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
     const double presses =
         w->use[KENT_SIDEWAYS] * w->site.allowable * c->increase / c->safety_factor;
@@ -151,6 +153,7 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
         caution_own_strength(w, h);
         kent_ground_caution(w, h);
     }
+    kent_footing_caution(w, h);
     caution_wet(w, h);
     if (w->site.hole > 0.0 && !w->site.all_round) {
         kent_notes_add(&h->cautions,
@@ -212,7 +215,14 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
         caution_own_strength(w, h);
         kent_ground_caution(w, h);
     }
-    if (h->soil_beside && h->held) {
+    if (h->soil_beside && h->held && w->site.fill) {
+        kent_notes_add(
+            &h->cautions,
+            "the curve presses on the fill beside the pipe with %s factored: of soil "
+            "'%s' and the ground behind it the weaker is counted on",
+            kent_said_of(KENT_FORCE_PER_LENGTH, w->m->units, w->side_load).s,
+            w->site.fill->id);
+    } else if (h->soil_beside && h->held) {
         kent_notes_add(
             &h->cautions,
             "the curve presses on the fill beside the pipe with %s factored: "
@@ -255,6 +265,14 @@ static void caution_near(const kent_holding_work *w, kent_holding *h)
     const bool joints = h->held && chosen && kent_leg_bears(w->fitting, w->pull);
 
     if (!h->soil_beside && !joints) return;
+    if (joints && w->site.falls > 0.0) {
+        kent_notes_add(
+            &h->cautions,
+            "the ground falls by %s that way, and the pipe leans on the side of its "
+            "trench: what that takes from the restrained lengths is not counted; state "
+            "a smaller passive_ratio for the soil here",
+            kent_said_of(KENT_ANGLE, w->m->units, w->site.falls).s);
+    }
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[w->fitting->obstacle_first + i];
         kent_notes_add(

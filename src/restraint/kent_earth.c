@@ -4,6 +4,8 @@
 #include <assert.h>
 #include <math.h>
 
+static const double PI = 3.14159265358979323846;
+
 /* source docs/theory/21-ground.md, 21.2 */
 double kent_falling_passive(double friction_angle, double wall_friction, double falls)
 {
@@ -26,6 +28,17 @@ double kent_coulomb_passive(double friction_angle, double wall_friction)
 
 /* source docs/theory/21-ground.md, 21.3 */
 double kent_coulomb_limit(double friction_angle) { return friction_angle / 3.0; }
+
+/* source docs/theory/21-ground.md, 21.13 */
+double kent_passive_plane(double friction_angle, double wall_friction)
+{
+    const double t = tan(friction_angle), d = tan(wall_friction);
+
+    if (!(wall_friction > 0.0)) return 0.25 * PI - 0.5 * friction_angle; /* Rankine's */
+    const double both = t + 1.0 / t;
+    return atan((t + sqrt(t * both * (1.0 + d / t))) / (1.0 + d * both)) -
+           friction_angle;
+}
 
 /* Pa m: the area under the effective vertical stress between two depths. */
 static double stress_area(const kent_earth *e, double top, double base)

@@ -18,6 +18,11 @@ double kent_falling_passive(double friction_angle, double wall_friction, double 
  * a third of the friction angle. source docs/theory/21-ground.md, 21.3 */
 double kent_coulomb_limit(double friction_angle);
 
+/* rad above the level: the plane that such a wedge slides up along, which is the
+ * flatter the more rubs on the face; 0 <= wall_friction <= friction_angle. fails never.
+ * source docs/theory/21-ground.md, 21.13 */
+double kent_passive_plane(double friction_angle, double wall_friction);
+
 /* An upright face in ground of one soil. */
 typedef struct kent_earth {
     double unit_weight;              /* N/m3, in place */

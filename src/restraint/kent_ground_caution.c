@@ -46,8 +46,10 @@ static void caution_coulomb(const kent_holding_work *w, kent_holding *h)
             "soil '%s' rubs on the face by %s, more than a third of its friction "
             "angle: "
             "there Coulomb's plane promises more than ground gives (it fails along a "
-            "curve); %.2f of Rankine's is counted on",
-            s->id, kent_said_of(KENT_ANGLE, units, s->wall_friction).s, over);
+            "curve); %.2f of Rankine's is counted on: state no more than %s, or no "
+            "wall_friction",
+            s->id, kent_said_of(KENT_ANGLE, units, s->wall_friction).s, over,
+            kent_said_of(KENT_ANGLE, units, kent_coulomb_limit(s->friction_angle)).s);
     }
     if (!(lifts > 0.0)) return; /* no face */
     kent_notes_add(&h->cautions,
@@ -64,10 +66,11 @@ static void caution_net(const kent_holding_work *w, kent_holding *h)
     const kent_bearing_view *view = &h->bearing;
     const double area = h->block.face.width * h->block.face.height;
     const double counts = w->site.allowable * area;
-    const double net = view->passive - view->active;
+    const bool rubs = kent_soil_way(w->site.leans) == KENT_WAY_COULOMB;
+    const double passive = rubs ? counts / w->site.leans->passive_share : view->passive;
+    const double net = passive - view->active;
 
     if (!view->seen || w->site.leans->route != KENT_BEARING_PASSIVE) return;
-    if (kent_soil_way(w->site.leans) == KENT_WAY_COULOMB) return;
     if (!(counts > net * (1.0 + SAME))) return; /* NaN: not known */
     kent_notes_add(&h->cautions,
                    "of the passive pressure %s are counted on over this face, and less "
@@ -80,15 +83,19 @@ static void caution_net(const kent_holding_work *w, kent_holding *h)
 static void caution_slope(const kent_holding_work *w, kent_holding *h)
 {
     const kent_soil *s = w->site.leans;
+    kent_bearing_place level = kent_site_place(&w->site, &w->m->rules);
+    kent_bearing_gap gap = KENT_BEARING_KNOWN;
 
     if (!(w->site.falls > 0.0)) return;
+    level.falls = 0.0;
+    const double share = w->site.allowable / kent_soil_bearing(s, &level, &gap);
+    if (isnan(share)) return; /* refused */
     kent_notes_add(
         &h->cautions,
         "the ground before the face falls by %s along the thrust: %.2f of what soil "
-        "'%s' gives on level ground is counted on, without its cohesion, and the wedge "
-        "that holds is short; whether the slope itself stays is not looked at",
-        kent_said_of(KENT_ANGLE, w->m->units, w->site.falls).s,
-        kent_falling_share(s, w->site.falls), s->id);
+        "'%s' gives on level ground is counted on, and the wedge that holds is short; "
+        "whether the slope itself stays is not looked at",
+        kent_said_of(KENT_ANGLE, w->m->units, w->site.falls).s, share, s->id);
 }
 
 static void caution_fill(const kent_holding_work *w, kent_holding *h)
@@ -103,6 +110,21 @@ static void caution_fill(const kent_holding_work *w, kent_holding *h)
         "density proved (90 to 95 %% of Proctor's is commonly asked)",
         site->fill->id,
         site->leans == site->fill ? "the fill" : "the ground behind it");
+}
+
+/* Next to a slope a footing bears less, for which no form is used here. */
+void kent_footing_caution(const kent_holding_work *w, kent_holding *h)
+{
+    const double angle = w->fitting->stated.slope.angle;
+
+    if (h->block.type == KENT_BLOCK_NONE || !(angle > 0.0)) return;
+    if (!(w->demand.load[KENT_DOWNWARD] > 0.0)) return;
+    kent_notes_add(
+        &h->cautions,
+        "the ground falls by %s where this presses down: what the soil bears "
+        "under a base is taken as on level ground; state a vertical_bearing "
+        "that holds beside that slope",
+        kent_said_of(KENT_ANGLE, w->m->units, angle).s);
 }
 
 void kent_ground_caution(const kent_holding_work *w, kent_holding *h)

@@ -119,7 +119,7 @@ bool kent_holding_above_ground(const kent_holding_work *w)
     return above;
 }
 
-static kent_fault holding_soil_fault(const kent_holding_work *w)
+static kent_fault holding_soil_fault(const kent_holding_work *w, const kent_holding *h)
 {
     const bool leans =
         w->demand.load[KENT_SIDEWAYS] > 0.0 || w->demand.load[KENT_DOWNWARD] > 0.0;
@@ -127,7 +127,7 @@ static kent_fault holding_soil_fault(const kent_holding_work *w)
     if (kent_holding_above_ground(w)) return KENT_FAULT_ABOVE_GROUND;
     if (!w->soil) return leans ? KENT_FAULT_SOIL_UNSTATED : KENT_FAULT_NONE;
     if (!kent_soil_counts(w->soil)) return KENT_FAULT_SOIL;
-    return kent_holding_ground_fault(w);
+    return kent_holding_ground_fault(w, h);
 }
 
 /* A gravity block may stand under a thrust that is downward alone. */
@@ -171,7 +171,7 @@ static void holding_reach(kent_holding_work *w, kent_holding *h)
 
 static void holding_block(kent_holding_work *w, kent_holding *h)
 {
-    w->fault = holding_soil_fault(w);
+    w->fault = holding_soil_fault(w, h);
     if (h->chosen == KENT_BLOCK_AND_JOINTS && isnan(h->block_share)) {
         w->fault = KENT_FAULT_SHARE;
     }
@@ -206,6 +206,8 @@ static void holding_curve(kent_holding_work *w, kent_holding *h)
     w->side_load = kent_curve_side_load(sideways, f->angle, f->curve_radius);
     if (kent_holding_above_ground(w)) return;
     if (!level || !(sideways > 0.0) || !kent_soil_counts(w->soil)) return;
+    w->fault = kent_holding_ground_fault(w, h);
+    if (w->fault != KENT_FAULT_NONE) return;
     const double use = w->side_load / (w->site.allowable * w->site.diameter);
     if (isnan(use)) return;
     holding_govern(w, h, KENT_SIDEWAYS);

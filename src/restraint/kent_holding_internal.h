@@ -78,7 +78,7 @@ double kent_couple_alone(const kent_model *m, const kent_fitting *group,
 void kent_holding_site(kent_holding_work *w, kent_holding *h);
 bool kent_holding_leans_both_ways(const kent_holding_work *w, const kent_holding *h);
 /* What of slope or fill keeps a face from being sized. */
-kent_fault kent_holding_ground_fault(const kent_holding_work *w);
+kent_fault kent_holding_ground_fault(const kent_holding_work *w, const kent_holding *h);
 /* What the rules make of the restraint that is chosen, and which part of the thrust a
  * block is for. */
 void kent_holding_policy(kent_holding_work *w, kent_holding *h);
@@ -97,6 +97,8 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h);
 void kent_holding_caution(kent_holding_work *w, kent_holding *h);
 /* Of slope, fill, and how the bearing is told. */
 void kent_ground_caution(const kent_holding_work *w, kent_holding *h);
+/* Of what presses down on ground that falls. */
+void kent_footing_caution(const kent_holding_work *w, kent_holding *h);
 /* What holds for every block alike, said once; nothing where there is none. */
 void kent_blocks_advise(kent_restraints *r);
 void kent_holding_derive(const kent_holding_work *w, kent_holding *h);

@@ -57,14 +57,10 @@ static bool soil_bears(const kent_soil *soil)
 
 bool kent_soil_counts(const kent_soil *soil)
 {
-    return soil != NULL && !soil->unreliable && soil->nature == KENT_NATURAL &&
-           soil_bears(soil);
+    return soil != NULL && !soil->unreliable && soil_bears(soil);
 }
 
-bool kent_fill_counts(const kent_soil *soil)
-{
-    return !soil->unreliable && soil->nature == KENT_NATURAL;
-}
+bool kent_fill_counts(const kent_soil *soil) { return !soil->unreliable; }
 
 const kent_soil *kent_point_soil(const kent_model *m, int point)
 {

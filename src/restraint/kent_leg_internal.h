@@ -201,8 +201,7 @@ double kent_zone_edge(const kent_model *m, int pipe, double from, bool ahead);
 
 /* The soil of a point: its own or the ground's; NULL: not stated. */
 const kent_soil *kent_point_soil(const kent_model *m, int point);
-bool kent_soil_counts(
-    const kent_soil *soil); /* stated, natural, reliable, some bearing */
-bool kent_fill_counts(const kent_soil *soil); /* natural, placed and reliable */
+bool kent_soil_counts(const kent_soil *soil); /* stated, reliable, some bearing */
+bool kent_fill_counts(const kent_soil *soil); /* placed and reliable */
 
 #endif

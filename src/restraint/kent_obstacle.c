@@ -6,12 +6,14 @@
 kent_wedge kent_wedge_before(const kent_holding_work *w, const kent_block *b)
 {
     const double phi = w->soil->friction_angle;
+    const bool rubs = kent_soil_way(w->soil) == KENT_WAY_COULOMB && !isnan(phi);
     return (kent_wedge){
         .front =
             0.5 * w->site.diameter + (b->has_face ? b->face_thickness : b->thickness),
         .half_width = 0.5 * b->face.width,
         .base = kent_site_axis(&w->site) + 0.5 * b->face.height,
         .friction_angle = isnan(phi) ? KENT_WEDGE_ANGLE : phi,
+        .wall_friction = rubs ? w->soil->wall_friction : 0.0,
     };
 }
 

@@ -104,6 +104,7 @@ static void policy_share(kent_holding_work *w, kent_holding *h)
         w->demand.load[s] *= h->block_share;
     }
     w->pull = kent_vec3_scale(h->joints_share, w->pull);
+    if (h->joints_share == 1.0) return; /* by the rules, as was said */
     kent_notes_add(&h->cautions,
                    "block and restrained joints act together: the block is for %.0f %% "
                    "of the thrust, the joints for %.0f %%; they give way by different "

@@ -1,3 +1,4 @@
+#include "kent_earth.h"
 #include "kent_holding_internal.h"
 #include "kent_said.h"
 #include "kent_stability_internal.h"
@@ -157,6 +158,8 @@ static void refuse_soil(const kent_holding_work *w, kent_text *t)
                   nature_says(nature));
     if (sound_ground(w, t)) kent_text_add(t, " by restrained joints, or ");
     kent_text_add(t, "%s", nature_way_out(nature));
+    if (nature == KENT_NATURAL) return;
+    kent_text_add(t, "; of ground made good with proof write unreliable = false");
 }
 
 /* No published reduction tells what a soil bears before ground that falls so. */
@@ -209,6 +212,15 @@ static void refuse_bearing(const kent_holding_work *w, kent_text *t)
                       "no block: the passive pressure of soil '%s' wants unit_weight, "
                       "friction_angle and cohesion; give all three, or ",
                       s->id);
+        return;
+    case KENT_BEARING_NO_PLANE:
+        kent_text_add(
+            t,
+            "no block: with a wall_friction of %s Coulomb's plane tells no "
+            "passive pressure of soil '%s'; state at most %s, a third of its "
+            "friction angle, or no wall_friction, or ",
+            kent_said_of(KENT_ANGLE, units, s->wall_friction).s, s->id,
+            kent_said_of(KENT_ANGLE, units, kent_coulomb_limit(s->friction_angle)).s);
         return;
     case KENT_BEARING_FALLS:
         refuse_falling(w, s, t);
@@ -468,6 +480,17 @@ static void refuse_curve(const kent_holding_work *w, const kent_holding *h,
             "and that soil, '%s', gives nothing: replace it, or make the turn "
             "with bends on piles",
             w->soil->id);
+    } else if (w->fault == KENT_FAULT_SLOPE) {
+        kent_text_add(
+            t,
+            "and the ground beside it falls that way by %s, where these rules "
+            "allow %s: level it, or make the turn with bends that are held",
+            kent_said_of(KENT_ANGLE, units, w->site.falls).s,
+            kent_said_of(KENT_ANGLE, units, w->m->rules.steepest_ground).s);
+    } else if (w->fault == KENT_FAULT_FILL) {
+        kent_text_add(t, "and the fill beside it is not stated, or bears nothing: give "
+                         "ground.backfill a soil that does, compacted with its density "
+                         "proved, or make the turn with bends that are held");
     } else if (isnan(h->utilisation)) {
         kent_text_add(t,
                       "and what that soil bears here is not known: give cover and what "

@@ -40,27 +40,30 @@ static double slope_worst(const kent_holding_work *w, const kent_holding *h)
     return worst;
 }
 
+/* A curve has the fill of its trench beside it, whatever else is said. */
+static bool leans_on_fill(const kent_fitting *f, const kent_holding *h)
+{
+    return f->stated.backing == KENT_BACKING_FILL ||
+           (h->soil_beside && f->backfill >= 0);
+}
+
 void kent_holding_site(kent_holding_work *w, kent_holding *h)
 {
     const kent_fitting *f = w->fitting;
     const kent_soil *fill = f->backfill >= 0 ? &w->m->soils[f->backfill] : NULL;
 
     w->site.falls = slope_worst(w, h);
-    if (f->stated.backing == KENT_BACKING_FILL && kent_soil_counts(fill)) {
-        w->site.fill = fill;
-    }
+    if (leans_on_fill(f, h) && kent_soil_counts(fill)) w->site.fill = fill;
     kent_site_bear(&w->site, &w->m->rules);
     if (kent_soil_counts(w->soil)) h->allowable_bearing = w->site.allowable;
 }
 
-kent_fault kent_holding_ground_fault(const kent_holding_work *w)
+kent_fault kent_holding_ground_fault(const kent_holding_work *w, const kent_holding *h)
 {
     const double steepest = w->m->rules.steepest_ground;
 
     if (!(w->demand.load[KENT_SIDEWAYS] > 0.0)) return KENT_FAULT_NONE;
     if (steepest > 0.0 && w->site.falls > steepest) return KENT_FAULT_SLOPE;
-    if (w->fitting->stated.backing == KENT_BACKING_FILL && !w->site.fill) {
-        return KENT_FAULT_FILL;
-    }
+    if (leans_on_fill(w->fitting, h) && !w->site.fill) return KENT_FAULT_FILL;
     return KENT_FAULT_NONE;
 }

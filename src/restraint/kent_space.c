@@ -16,7 +16,7 @@ static const double TOUCH = 1e-6;
 static const double BESIDE = 30.0;
 
 /* What is told of one fitting before the rest is only counted. */
-enum { TOLD = 4, GROUNDS = 2 };
+enum { TOLD = 4, GROUNDS = 4 }; /* both sides of a block, and two legs */
 
 typedef struct item {
     size_t fitting;
@@ -390,9 +390,10 @@ static void say(const kent_model *m, const kent_neighbour *n, kent_holding *h)
         kent_notes_add(
             &h->cautions,
             "this and '%s' lean on the same ground, %.0f %% of this one's at "
-            "the surface%s%s: it does not bear both at full value",
+            "the surface%s%s%s: it does not bear both at full value; hold them as one "
+            "(together_with), or one of them by other means",
             other, percent, isnan(n->clear) ? "" : ", their blocks ",
-            isnan(n->clear) ? "" : clear.s);
+            isnan(n->clear) ? "" : clear.s, isnan(n->clear) ? "" : " apart");
         break;
     case KENT_MEETS_MAIN:
         kent_notes_add(&h->cautions,

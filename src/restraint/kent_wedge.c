@@ -1,4 +1,5 @@
 #include "kent_wedge.h"
+#include "kent_earth.h"
 
 #include <math.h>
 
@@ -6,7 +7,8 @@ static const double QUARTER = 0.78539816339744831; /* rad: 45 degrees */
 
 double kent_wedge_reach(const kent_wedge *wedge)
 {
-    return wedge->base * tan(QUARTER + 0.5 * wedge->friction_angle);
+    return wedge->base /
+           tan(kent_passive_plane(wedge->friction_angle, wedge->wall_friction));
 }
 
 double kent_wedge_half_width(const kent_wedge *wedge, double before)

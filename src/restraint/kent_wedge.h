@@ -11,9 +11,12 @@ typedef struct kent_wedge {
     double half_width;     /* m, of the face */
     double base;           /* m, ground to the face's base */
     double friction_angle; /* rad */
+    double wall_friction;  /* rad, of soil on the face, where its pressure is counted
+                              on; 0 */
 } kent_wedge;
 
-/* m from the face to where the wedge meets the ground's surface. source 10.25 */
+/* m from the face to where the wedge meets the ground's surface. source 10.25; with
+ * wall friction 21.13 */
 double kent_wedge_reach(const kent_wedge *wedge);
 
 /* m to either side of the thrust's line, at a level distance before the face (m, >= 0).

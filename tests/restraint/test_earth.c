@@ -62,6 +62,33 @@ static void falling_ground_gives_less_the_steeper_it_falls(void **state)
     assert_true(isnan(kent_falling_passive(50.0 * DEGREE, 50.0 * DEGREE, 0.0)));
 }
 
+/* The plane is the one that gives least of all (Coulomb 1776): searched for by the
+ * triangle of forces, every thousandth of a degree. Without friction 45 - phi/2. */
+static void the_plane_of_failure_is_the_one_that_gives_least(void **state)
+{
+    (void)state;
+    static const double rows[][2] = {
+        {30.0, 10.0}, {30.0, 20.0}, {36.0, 12.0}, {25.0, 25.0}, {18.0, 6.0}};
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        const double phi = rows[i][0] * DEGREE, delta = rows[i][1] * DEGREE;
+        double least = INFINITY, at = 0.0;
+        for (double plane = 1e-3; plane < 60.0; plane += 1e-3) {
+            const double a = plane * DEGREE;
+            const double down = cos(delta) / tan(a + phi) - sin(delta);
+            if (!(down > 0.0)) break;
+            const double push = 1.0 / tan(a) / down; /* of gamma H2/2 */
+            if (push < least) at = a;
+            least = fmin(least, push);
+        }
+        assert_within(kent_passive_plane(phi, delta) / DEGREE, at / DEGREE, 0.01);
+        assert_close(least, kent_coulomb_passive(phi, delta), 1e-6);
+        assert_close(kent_passive_plane(phi, 0.0) / DEGREE, 45.0 - 0.5 * rows[i][0],
+                     1e-12);
+        assert_close(kent_passive_plane(phi, 1e-9), kent_passive_plane(phi, 0.0), 1e-6);
+    }
+    assert_close(kent_passive_plane(0.0, 0.0), 45.0 * DEGREE, 1e-12);
+}
+
 /* A design sheet whose arithmetic holds: 19.2 kN/m3, 30 degrees, a block from 0.598 m
  * to 2.098 m: 116.47 and 12.94 kN/m; with 37.82 kN of friction against 77.0 kN a factor
  * of 1.84. Das, Principles of Geotechnical Engineering, example 13.2 p 449: 16 kN/m3,
@@ -138,6 +165,7 @@ int main(void)
         cmocka_unit_test(coulombs_coefficient_is_the_textbooks),
         cmocka_unit_test(without_wall_friction_coulomb_is_rankine),
         cmocka_unit_test(falling_ground_gives_less_the_steeper_it_falls),
+        cmocka_unit_test(the_plane_of_failure_is_the_one_that_gives_least),
         cmocka_unit_test(a_face_finds_the_area_under_the_pressure),
         cmocka_unit_test(water_and_cohesion_are_summed_exactly),
         cmocka_unit_test(water_that_cuts_a_face_takes_more_than_at_its_centre),

@@ -131,10 +131,47 @@ static void friction_on_the_face_goes_by_coulomb_with_a_warning(void **state)
         assert_close(h->bearing.ways[KENT_WAY_RANKINE].bearing,
                      0.5 * (3.0 * 19e3 * 1.81 + own), 1e-9);
         assert_true(kent_hand_says(h, "Coulomb's plane promises more") == (pass == 1));
+        assert_false(kent_hand_says(h, "less the active pressure"));
         if (pass) kent_hand_expect(h, "1.91 of Rankine's");
         kent_hand_expect(h, "what rubs on the face lifts the block");
         finish(&b, r);
     }
+}
+
+/* Near 45 degrees of both the root of Coulomb's form reaches 1: nothing is to be
+ * leant on, and what would be right is said. */
+static void
+friction_beyond_what_coulomb_can_tell_is_refused_with_what_would_do(void **state)
+{
+    (void)state;
+    kent_build b = main_that_ends(KENT_BEARING_PASSIVE);
+    b.model->soils[1].friction_angle = 48.0 * DEGREE;
+    b.model->soils[1].wall_friction = 46.0 * DEGREE;
+    kent_restraints *r = sized(&b);
+    assert_false(at_e(&b, r)->held);
+    kent_hand_expect(at_e(&b, r), "state at most 16.0");
+    kent_hand_expect(at_e(&b, r), "or no wall_friction");
+    assert_false(kent_hand_says(at_e(&b, r), "give all three"));
+    finish(&b, r);
+}
+
+/* A soil that rubs gives more than Rankine's by what it states: that is said once. */
+static void what_coulomb_counts_on_is_doubted_once(void **state)
+{
+    (void)state;
+    static const kent_hand_case ONCE[] = {{"test", KENT_CASE_TEST, 1.0, 0.15e6}};
+    kent_build b = main_that_ends(KENT_BEARING_PASSIVE);
+    b.model->soils[1].wall_friction = 20.0 * DEGREE;
+    b.model->soils[1].passive_share = 1.0;
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, ONCE, 1);
+    const kent_holding *h = at_e(&b, r);
+    assert_true(h->held);
+    kent_hand_expect(h, "state no more than 10.0");
+    kent_hand_expect(h, "less the active pressure");
+    assert_false(kent_hand_says(h, "asks for a passive coefficient"));
+    assert_false(kent_hand_says(h, "one of its values is wrong"));
+    finish(&b, r);
 }
 
 /* ---- water in the face, active pressure ------------------------------------------ */
@@ -270,6 +307,7 @@ static void fill_that_nobody_states_or_that_is_loose_is_refused(void **state)
         kent_build b = main_that_ends(KENT_BEARING_CONSTANT);
         b.model->notes[0].stated.backing = KENT_BACKING_FILL;
         b.model->soils[0].nature = KENT_FILL;
+        b.model->soils[0].unreliable = true;
         if (pass) b.model->ground.backfill = 0;
         kent_restraints *r = sized(&b);
         assert_false(at_e(&b, r)->held);
@@ -296,6 +334,7 @@ static void ground_of_each_nature_is_refused_with_its_own_way_out(void **state)
         for (int joints = 0; joints < 2; joints++) {
             kent_build b = main_that_ends(KENT_BEARING_CONSTANT);
             b.model->soils[1].nature = rows[i].nature;
+            b.model->soils[1].unreliable = true;
             if (joints) b.model->notes[0].restraint = (int)KENT_RESTRAINED_JOINTS;
             kent_restraints *r = sized(&b);
             const kent_holding *h = at_e(&b, r);
@@ -304,9 +343,67 @@ static void ground_of_each_nature_is_refused_with_its_own_way_out(void **state)
             assert_true(isnan(h->allowable_bearing));
             assert_false(h->bearing.seen);
             kent_hand_expect(h, rows[i].words);
+            kent_hand_expect(h, "made good with proof write unreliable = false");
             kent_hand_expect(h, "carry the restraint more than the 300 m");
             finish(&b, r);
         }
+    }
+}
+
+/* A case that says so itself is believed, and told so where it is read. */
+static void ground_that_was_made_good_counts_again(void **state)
+{
+    (void)state;
+    for (int pass = 0; pass < 2; pass++) {
+        kent_build b = main_that_ends(KENT_BEARING_CONSTANT);
+        b.model->soils[1].nature = KENT_LIQUEFIABLE;
+        b.model->soils[1].unreliable = pass == 1;
+        kent_restraints *r = sized(&b);
+        assert_true(at_e(&b, r)->held == (pass == 0));
+        finish(&b, r);
+    }
+}
+
+/* What slope takes from a base and from the side of a trench is not worked out: it is
+ * said, with what to state. */
+static void a_slope_under_a_base_or_beside_restrained_joints_is_told(void **state)
+{
+    (void)state;
+    for (int pass = 0; pass < 4; pass++) {
+        const bool joints = pass >= 2, slopes = pass % 2 == 1;
+        kent_build b = kent_build_new();
+        (void)kent_build_point(&b, "A", -300.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "E", 0.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "Z", 300.0, joints ? 60.0 : 0.0,
+                               joints ? 50.0 : 90.0);
+        const int p = kent_build_pipe(&b, "P", "A E Z", 0.6, 1000.0);
+        b.model->pipes[p].unit_mass = 150.0;
+        (void)kent_build_fixed_level(&b, "A", 150.0);
+        (void)kent_build_outflow(&b, "Z", 0.0);
+        (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+        kent_soil *s = &b.model->soils[0];
+        s->friction_angle = 30.0 * DEGREE;
+        s->cohesion = 0.0;
+        s->friction_ratio = 0.7;
+        s->adhesion_ratio = 0.0;
+        s->passive_ratio = 0.5;
+        b.model->ground.water_table = (double)INFINITY;
+        b.model->loads.test_pressure = 0.15e6;
+        const int note = kent_build_note(&b, "E");
+        b.model->notes[note].restraint =
+            joints ? (int)KENT_RESTRAINED_JOINTS : (int)KENT_THRUST_BLOCK;
+        if (slopes) {
+            b.model->notes[note].stated.slope =
+                (kent_slope){{0.0, -1.0, 0.0}, 20.0 * DEGREE};
+        }
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = at_e(&b, r);
+        assert_true(h->held);
+        assert_true(kent_hand_says(h, "state a vertical_bearing that holds") ==
+                    (slopes && !joints));
+        assert_true(kent_hand_says(h, "state a smaller passive_ratio") ==
+                    (slopes && joints));
+        finish(&b, r);
     }
 }
 
@@ -322,6 +419,11 @@ int main(void)
         cmocka_unit_test(too_steep_or_unknown_ground_is_refused),
         cmocka_unit_test(a_face_against_fill_bears_what_the_weaker_does),
         cmocka_unit_test(fill_that_nobody_states_or_that_is_loose_is_refused),
+        cmocka_unit_test(
+            friction_beyond_what_coulomb_can_tell_is_refused_with_what_would_do),
+        cmocka_unit_test(what_coulomb_counts_on_is_doubted_once),
+        cmocka_unit_test(ground_that_was_made_good_counts_again),
+        cmocka_unit_test(a_slope_under_a_base_or_beside_restrained_joints_is_told),
         cmocka_unit_test(ground_of_each_nature_is_refused_with_its_own_way_out),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -14,7 +14,7 @@ static const kent_hand_case TEST[] = {{"test", KENT_CASE_TEST, 1.5, 0.5e6}};
 static void the_wedge_reaches_and_widens_by_the_angle_of_the_soil(void **state)
 {
     (void)state;
-    const kent_wedge wedge = {0.6, 0.5, 2.0, 30.0 * DEGREE};
+    const kent_wedge wedge = {0.6, 0.5, 2.0, 30.0 * DEGREE, 0.0};
     assert_close(kent_wedge_reach(&wedge), 3.4641016151377544, 1e-12);
     assert_within(kent_wedge_clearance(&wedge, 4.6, 0.0), 4.0 - 3.4641016, 1e-6);
     assert_within(kent_wedge_clearance(&wedge, 4.0, 0.0), 0.0, 0.0);
@@ -25,7 +25,7 @@ static void the_wedge_reaches_and_widens_by_the_angle_of_the_soil(void **state)
     assert_within(kent_wedge_clearance(&wedge, -1.0, 0.0), 1.0, 1e-12);
     assert_within(kent_wedge_clearance(&wedge, 0.0, 0.7), 0.2, 1e-12);
 
-    const kent_wedge loose = {0.6, 0.5, 2.0, 0.0};
+    const kent_wedge loose = {0.6, 0.5, 2.0, 0.0, 0.0};
     assert_close(kent_wedge_reach(&loose), 2.0, 1e-12);
 }
 
@@ -128,7 +128,7 @@ static void a_block_leans_on_nothing_but_ground(void **state)
 static void what_runs_on_beside_a_face_crosses_its_wedge_farther_along(void **state)
 {
     (void)state;
-    const kent_wedge wedge = {0.6, 0.5, 2.0, 30.0 * DEGREE};
+    const kent_wedge wedge = {0.6, 0.5, 2.0, 30.0 * DEGREE, 0.0};
     assert_close(kent_wedge_farthest(&wedge, 0.0, 1.0), 2.5, 1e-12);
     assert_close(kent_wedge_farthest(&wedge, 0.0, -1.0), 2.5, 1e-12);
     assert_close(kent_wedge_farthest(&wedge, 1.0, 0.0), 0.6 + 2.0 * sqrt(3.0), 1e-12);
@@ -180,6 +180,39 @@ static void a_refusal_says_where_and_the_ways_out(void **state)
                            "move one of them, or restrained joints"));
 }
 
+/* What rubs on the face makes the plane flatter: at 30 and 20 degrees 18.1 in place of
+ * 30, so that the wedge reaches 3.06 in place of 1.73 times its depth. A soil that goes
+ * by another bearing counts on none of that. */
+static void friction_on_the_face_makes_its_wedge_reach_farther(void **state)
+{
+    (void)state;
+    for (int pass = 0; pass < 3; pass++) {
+        kent_build b = main_that_ends(30.0 * DEGREE, KENT_THRUST_BLOCK);
+        kent_soil *s = &b.model->soils[0];
+        s->cohesion = 0.0;
+        s->passive_share = 1.0;
+        s->wall_friction = 20.0 * DEGREE;
+        if (pass < 2) s->route = KENT_BEARING_PASSIVE;
+        const double reach = (pass < 2 ? 3.0584 : 1.7321) * (1.81 + 0.5 * 1.0);
+        const double front = 0.31 + 0.45; /* of a face 1 m high, or lower by a little */
+        put_obstacle(&b, front + reach + (pass == 1 ? -1.0 : 0.4), 0.0);
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "E")];
+        assert_true(h->held == (pass != 1));
+        (void)kent_hand_lines(&h->derivation, KENT_SI);
+        assert_true((kent_derivation_find(&h->derivation, "psi") != NULL) ==
+                    (pass == 0));
+        if (h->held) {
+            const double base = 1.81 + 0.5 * h->block.face.height;
+            assert_close(kent_wedge_reach(&h->footprint.wedge),
+                         (pass < 2 ? 3.0584 : sqrt(3.0)) * base, 1e-4);
+        }
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -189,6 +222,7 @@ int main(void)
         cmocka_unit_test(
             what_stands_behind_counts_only_for_a_block_that_holds_both_ways),
         cmocka_unit_test(the_angle_of_the_soil_counts_and_an_assumed_one_is_said),
+        cmocka_unit_test(friction_on_the_face_makes_its_wedge_reach_farther),
         cmocka_unit_test(a_refusal_says_where_and_the_ways_out),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -136,6 +136,7 @@ static void rules_that_want_both_have_each_for_all_of_the_thrust(void **state)
         assert_true(h->held);
         kent_hand_expect(h, stated ? "block_share, 0.4, is not used"
                                    : "restrained joints with every block");
+        assert_false(kent_hand_says(h, "act together"));
         finish(&b, r);
     }
 }

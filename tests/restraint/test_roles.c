@@ -104,6 +104,49 @@ static void a_curve_that_cannot_be_judged_is_not_held(void **state)
     finish(&b, r);
 }
 
+/* What the trench is filled with, where the case states it, and ground that falls away
+ * to the side that is pushed, here -y and a little +x: 8 degrees leave 0.783 of 30
+ * degrees' (2.349 of 3, 21.2). */
+static void a_curve_leans_on_its_fill_and_on_no_slope(void **state)
+{
+    (void)state;
+    static const struct {
+        double fill, falls; /* Pa, degrees; fill 0: none is stated */
+        const char *words;
+        bool held;
+    } rows[] = {
+        {0.0, 0.0, "is taken to bear as much as soil 'till'", true},
+        {60e3, 0.0, "of soil 'fill' and the ground behind it the weaker", true},
+        {-1.0, 0.0, "the fill beside it is not stated, or bears nothing", false},
+        {0.0, 8.0, "the ground before the face falls by 8.0", true},
+        {0.0, 11.0, "these rules allow 10.0", false}};
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        kent_build b = main_that_curves(100.0, 0.0);
+        kent_fitting *f = &b.model->fittings[kent_build_fitting_of(&b, "C")];
+        const double pull = 1.5 * 1.0e6 * 0.25 * PI * 0.62 * 0.62;
+        double bears = rows[i].fill > 0.0 ? 60e3 : 150e3;
+        b.model->soils[0].friction_angle = 30.0 * DEGREE;
+        b.model->rules.steepest_ground = 10.0 * DEGREE;
+        if (rows[i].fill != 0.0) {
+            f->backfill = kent_build_soil(&b, "fill", fabs(rows[i].fill), 18e3, 1.5);
+            b.model->soils[f->backfill].unreliable = rows[i].fill < 0.0;
+        }
+        if (rows[i].falls > 0.0) {
+            const double side = (-90.0 + 11.25) * DEGREE;
+            f->stated.slope =
+                (kent_slope){{cos(side), sin(side), 0.0}, rows[i].falls * DEGREE};
+            bears *= 0.7829; /* by hand */
+        }
+        kent_restraints *r = kent_hand_size(&b, TEST, 1);
+        assert_true(at_c(&b, r)->held == rows[i].held);
+        kent_hand_expect(at_c(&b, r), rows[i].words);
+        if (rows[i].held) {
+            assert_close(at_c(&b, r)->utilisation, pull / 100.0 / (bears * 0.62), 1e-3);
+        }
+        finish(&b, r);
+    }
+}
+
 static void the_bearing_beside_a_curve_is_doubted_as_any_other(void **state)
 {
     (void)state;
@@ -429,6 +472,7 @@ int main(void)
         cmocka_unit_test(
             a_curve_presses_on_the_soil_beside_it_with_its_pull_over_its_radius),
         cmocka_unit_test(a_curve_that_cannot_be_judged_is_not_held),
+        cmocka_unit_test(a_curve_leans_on_its_fill_and_on_no_slope),
         cmocka_unit_test(the_bearing_beside_a_curve_is_doubted_as_any_other),
         cmocka_unit_test(every_line_of_a_curve_follows_from_those_above),
         cmocka_unit_test(a_sleeve_on_an_old_main_is_held_by_a_block_or_not_at_all),

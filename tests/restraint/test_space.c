@@ -120,6 +120,9 @@ static void blocks_face_to_face_collide_share_ground_or_do_not_meet(void **state
             kent_hand_expect(&r->fittings[kent_build_fitting_of(&b, ends[k])],
                              rows[i].words);
         }
+        assert_true(kent_hand_says(&r->fittings[kent_build_fitting_of(&b, "E")],
+                                   " apart: it does not bear both") ==
+                    (rows[i].how == KENT_MEETS_SHARED));
         finish(&b, r);
     }
     b = ends_facing(2.0 * (at.front + reach) + 0.1, 0.0);
@@ -225,6 +228,48 @@ static void a_main_beside_a_restrained_bend_is_named(void **state)
     }
 }
 
+/* Of a block with restrained joints the ground of both legs counts, beside the block's:
+ * a main along either, 1.5 m to the side that is pushed, clear of the wedge. */
+static void beside_a_block_with_joints_the_ground_of_both_legs_counts(void **state)
+{
+    (void)state;
+    for (int pass = 0; pass < 2; pass++) {
+        const double half = sqrt(0.5);
+        kent_build b = kent_build_new();
+        (void)kent_build_point(&b, "A", -300.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "B", 0.0, 0.0, 50.0);
+        (void)kent_build_point(&b, "C", 200.0, 200.0, 50.0);
+        const double near = 2.5, far = 12.0; /* m along the leg */
+        (void)kent_build_point(&b, "S", pass ? (near + 1.5) * half : -near,
+                               pass ? (near - 1.5) * half : -1.5, 50.0);
+        (void)kent_build_point(&b, "T", pass ? (far + 1.5) * half : -far,
+                               pass ? (far - 1.5) * half : -1.5, 50.0);
+        const int p = kent_build_pipe(&b, "P", "A B C", 0.6, 1000.0);
+        b.model->pipes[p].unit_mass = 150.0;
+        (void)kent_build_pipe(&b, "Q", "S T", 0.6, 1000.0);
+        (void)kent_build_fixed_level(&b, "A", 150.0);
+        (void)kent_build_fixed_level(&b, "S", 150.0);
+        (void)kent_build_outflow(&b, "C", 0.0);
+        b.model->loads.test_pressure = 0.2e6;
+        (void)kent_build_soil(&b, "till", 150e3, 19e3, 1.5);
+        kent_soil *s = &b.model->soils[0];
+        s->friction_angle = PI / 6.0;
+        s->cohesion = 0.0;
+        s->friction_ratio = 0.2;
+        s->adhesion_ratio = 0.0;
+        s->passive_ratio = 0.02;
+        const int note = kent_build_note(&b, "B");
+        b.model->notes[note].restraint = (int)KENT_BLOCK_AND_JOINTS;
+        b.model->notes[note].stated.block_share = 0.1;
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_true(h->held && h->footprint.pipe_leans && h->footprint.leans);
+        assert_true(h->legs[pass].length > near);
+        kent_hand_expect(h, "'Q' runs through the ground that ");
+        finish(&b, r);
+    }
+}
+
 /* A street of dead ends, each of which meets the next alone: as many pairs, whatever
  * the number. */
 static void many_fittings_meet_their_neighbours_alone(void **state)
@@ -271,6 +316,7 @@ int main(void)
         cmocka_unit_test(wedges_meet_to_the_side_too),
         cmocka_unit_test(another_main_through_the_ground_is_named),
         cmocka_unit_test(a_main_beside_a_restrained_bend_is_named),
+        cmocka_unit_test(beside_a_block_with_joints_the_ground_of_both_legs_counts),
         cmocka_unit_test(many_fittings_meet_their_neighbours_alone),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
