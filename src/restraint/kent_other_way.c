@@ -241,8 +241,8 @@ static void say_shut_legs(const kent_holding_work *w, kent_holding *h)
         kent_notes_add(&h->cautions,
                        "its legs can be shut one by one, and '%s' pulls another way, "
                        "with %s sideways before any factor: restrain the joints of all "
-                       "its legs, over %s each, or write closes in fittings, if some "
-                       "have no valve",
+                       "its legs, over %s each, or name in can_close those that have "
+                       "a valve",
                        name, force(w, way->sideways).s,
                        kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s);
         return;
@@ -266,7 +266,7 @@ static void say_balanced(const kent_holding_work *w, kent_holding *h)
     if (f->stated.closes_count >= f->port_count) return;
     kent_notes_add(
         &h->cautions,
-        "%s of this %s can be shut, as closes says: it is balanced only while "
+        "%s of this %s can be shut, as can_close says: it is balanced only while "
         "the others are under pressure, all at once and for good",
         f->stated.closes_count == 0 ? "no leg" : "not every leg",
         kent_fitting_type_word(f->type));
