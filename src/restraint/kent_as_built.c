@@ -148,7 +148,7 @@ static void built_other_ways(const kent_holding_work *w, kent_holding *h,
             "'%s' pushes another way than the face bears, by %s factored: %s",
             w->loads->cases[way->load_case].title.s,
             kent_said_of(KENT_FORCE, w->m->units, way->load).s, TAKES[way->taken]);
-        if (way->taken == KENT_TAKEN_BY_NOTHING) h->as_built.falls_short = true;
+        if (kent_other_way_bars(way)) h->as_built.falls_short = true;
     }
 }
 
@@ -325,7 +325,7 @@ static void find_leg(const kent_holding_work *w, kent_holding *h,
 static void find_legs(const kent_holding_work *w, kent_holding *h,
                       const kent_built *built)
 {
-    const kent_leg_rule *rule = kent_leg_rule_of(w->fitting);
+    const kent_leg_rule *rule = kent_leg_rule_of(w->m, w->fitting);
     const size_t ports = w->fitting->port_count;
     const size_t end =
         rule->first + rule->count < ports ? rule->first + rule->count : ports;

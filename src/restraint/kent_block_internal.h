@@ -54,6 +54,7 @@ typedef enum kent_fault {
     KENT_FAULT_ABOVE_GROUND, /* no soil is there to bear */
     KENT_FAULT_SLOPE, /* the ground before the face falls more than the rules allow */
     KENT_FAULT_FILL,  /* fill before the face that is not stated, or bears nothing */
+    KENT_FAULT_OTHER_WAY, /* a push that its face does not bear */
     KENT_FAULT_SHARE, /* of block and joints, which part is the block's is not stated */
     KENT_FAULT_SOIL   /* peat, fill: nothing may count on it */
 } kent_fault;

@@ -186,9 +186,8 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
 
 static void caution_joints(const kent_holding_work *w, kent_holding *h)
 {
-    const kent_fitting_type type = w->fitting->type;
-    const bool branch = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
-
+    const kent_leg_rule *rule = kent_leg_rule_of(w->m, w->fitting);
+    const bool branch = rule->first > 0; /* its run has no length */
     const bool joints =
         h->chosen == KENT_RESTRAINED_JOINTS || h->chosen == KENT_BLOCK_AND_JOINTS;
     if (!joints || h->leg_count == 0) return;
@@ -198,8 +197,7 @@ static void caution_joints(const kent_holding_work *w, kent_holding *h)
                        "the restrained length of a branch takes no credit "
                        "for the run, whose restrained length is not given");
     }
-    kent_notes_add(&h->cautions, "restrained length %s",
-                   kent_leg_rule_of(w->fitting)->says);
+    kent_notes_add(&h->cautions, "restrained length %s", rule->says);
 }
 
 /* What its role and shape ask of whoever builds it. */

@@ -31,6 +31,7 @@ static void footprint_block(const kent_holding_work *w, const kent_holding *h,
     at->both_ways = kent_holding_leans_both_ways(w, h);
     at->front = fmax(at->front, 0.5 * w->site.diameter + thick);
     at->half_width = fmax(at->half_width, 0.5 * b->face.width);
+    at->all_round = w->site.all_round;
     if (at->both_ways) at->behind = at->front;
     if (at->leans) at->wedge = kent_wedge_before(w, b);
 }

@@ -250,7 +250,7 @@ static double leg_use(const kent_leg *leg)
 static bool joints_hold(const kent_holding_work *w, const kent_holding *h,
                         size_t wanted, double *use)
 {
-    const bool either = kent_leg_rule_of(w->fitting)->either;
+    const bool either = kent_leg_rule_of(w->m, w->fitting)->either;
     size_t fitting = 0;
 
     *use = 0.0;
@@ -309,7 +309,7 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
         if (h->chosen == KENT_BLOCK_AND_JOINTS) holding_both(w, h, 0);
         return;
     }
-    const kent_leg_rule *rule = kent_leg_rule_of(w->fitting);
+    const kent_leg_rule *rule = kent_leg_rule_of(w->m, w->fitting);
     const size_t end = rule->first + rule->count < w->fitting->port_count
                            ? rule->first + rule->count
                            : w->fitting->port_count;

@@ -34,6 +34,7 @@ typedef struct kent_holding_work { /* borrowed, for one fitting */
     double pull_factor;
     bool blocks_forbidden;         /* by the rules: joints stand in for one */
     const kent_obstacle *obstacle; /* in the wedge before the face; NULL */
+    const kent_other_way *barred;  /* that nothing takes, of h's; NULL */
     bool tested;                   /* a site test is among its load cases */
     kent_couple couple;            /* nil but of a group */
     double alone;                  /* N, see kent_couple_alone */
@@ -62,6 +63,10 @@ bool kent_one_way(const kent_load_case *a, const kent_load_case *b);
  * that which holds takes them, after; and saying so. */
 void kent_other_ways_find(kent_holding_work *w, kent_holding *h);
 void kent_other_ways_take(const kent_holding_work *w, kent_holding *h);
+/* Not held, where nothing takes one of them that something must; why, for a block. */
+void kent_other_ways_judge(kent_holding_work *w, kent_holding *h);
+void kent_other_way_refuse(const kent_holding_work *w, const kent_holding *h,
+                           kent_text *t);
 void kent_other_ways_caution(const kent_holding_work *w, kent_holding *h);
 /* The area taken, an end that is opened, straight pieces that pass a pull on. */
 void kent_loads_caution(const kent_holding_work *w, kent_holding *h);

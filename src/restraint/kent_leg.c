@@ -24,13 +24,19 @@ static const kent_leg_rule RULES[] = {
 static const kent_leg_rule TURNED_REDUCER = {0,     2,    "on each leg", KENT_REDUCER,
                                              false, false};
 
-const kent_leg_rule *kent_leg_rule_of(const kent_fitting *fitting)
+/* Of a tee, wye or cross. */
+static const kent_leg_rule SHUT_LEGS = {0,          KENT_PORTS, "on each leg",
+                                        KENT_CROSS, false,      false};
+
+const kent_leg_rule *kent_leg_rule_of(const kent_model *m, const kent_fitting *fitting)
 {
     const size_t count = sizeof RULES / sizeof RULES[0];
     const kent_fitting_type type = fitting->type;
+    const bool branches = type == KENT_TEE || type == KENT_WYE || type == KENT_CROSS;
     size_t i = 0;
 
     if (type == KENT_REDUCER && fitting->angle > LEAST_TURN) return &TURNED_REDUCER;
+    if (branches && kent_fitting_has_shut_legs(m, fitting)) return &SHUT_LEGS;
     while (i + 1 < count && RULES[i].type != type) {
         i++;
     }
@@ -106,7 +112,8 @@ static void run_bears(const kent_model *m, const kent_standings *standings,
     w->run_bearing[port] = side.gives;
 }
 
-/* A branch square to its run, pushed level or down, presses the run's side. */
+/* A branch square to its run, pushed level or down, presses the run's side. Not where
+ * legs can be shut: it is pushed along the run too. */
 static void run_credit(const kent_model *m, const kent_standings *standings,
                        size_t fitting, kent_vec3 thrust, kent_leg_work *w)
 {
@@ -114,6 +121,7 @@ static void run_credit(const kent_model *m, const kent_standings *standings,
     const double lifted = KENT_BLOCK_NEGLIGIBLE * kent_vec3_length(thrust);
 
     if (f->type != KENT_TEE || thrust.z > lifted) return;
+    if (kent_fitting_has_shut_legs(m, f)) return;
     for (size_t k = 0; k < 2; k++) {
         run_bears(m, standings, fitting, k, w);
     }
@@ -159,7 +167,7 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_standings *standings,
 {
     const kent_fitting *fitting = &m->fittings[index];
     const kent_port *p = &m->ports[fitting->port_first + port];
-    const kent_leg_rule *rule = kent_leg_rule_of(fitting);
+    const kent_leg_rule *rule = kent_leg_rule_of(m, fitting);
     const double push = kent_vec3_length(thrust);
 
     *out = (kent_leg_work){.factor = factor,

@@ -101,8 +101,9 @@ static void note_run(kent_holding_work *w, const kent_leg_work *work)
         kent_notes_add(&w->met, "these design rules count nothing of the bearing of a "
                                 "tee's run (run_share)");
     } else if (!(work->credit > 0.0)) {
-        kent_notes_add(&w->met, "the tee pushes up, or its run can't lean on the "
-                                "ground: nothing of the run is credited");
+        kent_notes_add(&w->met, "the tee pushes up, its legs can be shut, or its run "
+                                "can't lean on the ground: nothing of the run is "
+                                "credited");
     } else {
         kent_notes_add(
             &w->met,
@@ -144,7 +145,8 @@ static void note_forms(kent_holding_work *w, const kent_leg_work *work)
 /* A reducer in line draws one of its pipes and presses the other. */
 static void note_reducer(kent_holding_work *w, const kent_port *p)
 {
-    if (w->fitting->type != KENT_REDUCER || !kent_leg_rule_of(w->fitting)->either) {
+    if (w->fitting->type != KENT_REDUCER ||
+        !kent_leg_rule_of(w->m, w->fitting)->either) {
         return;
     }
     const double along = kent_vec3_dot(w->pull, p->direction);

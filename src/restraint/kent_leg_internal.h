@@ -120,8 +120,9 @@ typedef struct kent_leg_rule {
     bool either; /* one leg alone is enough */
 } kent_leg_rule;
 
-/* By its type; a reducer that also turns pulls on both legs, as a bend does. */
-const kent_leg_rule *kent_leg_rule_of(const kent_fitting *fitting);
+/* By its type; a reducer that also turns pulls on both legs, as a bend does, and where
+ * legs can be shut (9.16) each pulls in its turn. */
+const kent_leg_rule *kent_leg_rule_of(const kent_model *m, const kent_fitting *fitting);
 
 /* Whether fitting and thrust (N) let the passive resistance of the trench side count.
  */

@@ -23,12 +23,10 @@ typedef struct lying {
     bool runs_past; /* a long one, square to its direction, would cross the wedge */
 } lying;
 
-/* On one side: 1, or -1 against the thrust. */
-static lying lying_of(const kent_holding_work *w, const kent_holding *h,
-                      const kent_wedge *wedge, const kent_obstacle *o, double side)
+/* Along a thrust (N): side 1, or -1 against it. */
+static lying lying_along(const kent_wedge *wedge, const kent_obstacle *o,
+                         kent_vec3 thrust, double side)
 {
-    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
-    const kent_vec3 thrust = kent_instant_lasting(&c->worst[KENT_SIDEWAYS]);
     const double size = side * kent_thrust_horizontal(thrust);
     const double x = thrust.x / size, y = thrust.y / size;
     const double along = o->direction.x * x + o->direction.y * y;
@@ -40,6 +38,28 @@ static lying lying_of(const kent_holding_work *w, const kent_holding *h,
     };
 }
 
+static lying nearer(lying a, lying b)
+{
+    return (lying){fmin(a.clear, b.clear), a.runs_past || b.runs_past};
+}
+
+/* Along every way that the block leans. */
+static lying lying_of(const kent_holding_work *w, const kent_holding *h,
+                      const kent_wedge *wedge, const kent_obstacle *o)
+{
+    const kent_load_case *c = &w->loads->cases[h->by_sense[KENT_SIDEWAYS]];
+    const kent_vec3 thrust = kent_instant_lasting(&c->worst[KENT_SIDEWAYS]);
+    lying it = lying_along(wedge, o, thrust, 1.0);
+
+    if (kent_holding_leans_both_ways(w, h)) {
+        it = nearer(it, lying_along(wedge, o, thrust, -1.0));
+    }
+    for (size_t i = 0; i < h->other_way_count && w->site.all_round; i++) {
+        it = nearer(it, lying_along(wedge, o, h->other_ways[i].thrust, 1.0));
+    }
+    return it;
+}
+
 bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
 {
     const kent_wedge wedge = kent_wedge_before(w, &h->block);
@@ -49,12 +69,7 @@ bool kent_obstacle_clear(kent_holding_work *w, const kent_holding *h)
     w->reach = kent_wedge_reach(&wedge);
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[first + i];
-        lying it = lying_of(w, h, &wedge, o, 1.0);
-        if (kent_holding_leans_both_ways(w, h)) {
-            const lying other = lying_of(w, h, &wedge, o, -1.0);
-            it.clear = fmin(it.clear, other.clear);
-            it.runs_past = it.runs_past || other.runs_past;
-        }
+        const lying it = lying_of(w, h, &wedge, o);
         if (!(it.clear > 0.0)) {
             w->obstacle = o;
             return false;

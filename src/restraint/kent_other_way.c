@@ -6,6 +6,9 @@ static const double PI = 3.14159265358979323846;
 /* rad: cases that push no farther apart push one way. A face that leans into the push
  * so much bears 0.7 of it square on. Common practice, no source. */
 static const double ONE_WAY = 0.25 * PI;
+/* Share of what governs: suction presses joints together, and less of it is left to the
+ * fill beside the pipe and its friction. Common practice, no source. */
+static const double SLIGHT = 0.1;
 /* Loads nearer than this, relative, are a tie. */
 static const double TIE = 1e-12;
 
@@ -66,7 +69,7 @@ static kent_other_way next_way(const kent_holding_work *w, const kent_holding *h
             if (!at[k]->set) continue;
             const kent_vec3 thrust = kent_instant_lasting(at[k]);
             const double sideways = kent_thrust_horizontal(thrust);
-            const kent_other_way way = {
+            kent_other_way way = {
                 .load_case = (int)i,
                 .thrust = thrust,
                 .sideways = sideways,
@@ -75,6 +78,8 @@ static kent_other_way next_way(const kent_holding_work *w, const kent_holding *h
                 .turned = turned_between(governs, thrust),
                 .friction = NAN,
             };
+            way.slight = at[k]->pressure < 0.0 &&
+                         way.load <= SLIGHT * w->factored[KENT_SIDEWAYS];
             if (!(sideways >= KENT_HOLDING_LEAST)) continue;
             if (is_known(h, governs, thrust)) continue;
             if (goes_before(w, &way, &best)) best = way;
@@ -140,33 +145,49 @@ static kent_taken taken_by_block(const kent_holding_work *w, const kent_holding 
     return way->friction >= way->load ? KENT_TAKEN_BY_FRICTION : KENT_TAKEN_BY_NOTHING;
 }
 
-/* Whether every pipe of the fitting is restrained. */
-static bool all_legs_restrained(const kent_holding_work *w, const kent_holding *h)
+/* Of two systems: whether the joints' part of what they are made for is as much. */
+static bool taken_by_joints(const kent_holding_work *w, const kent_holding *h,
+                            const kent_other_way *way)
 {
-    size_t pipes = 0;
-
-    for (size_t k = 0; k < w->fitting->port_count; k++) {
-        pipes += w->m->ports[w->fitting->port_first + k].kind == KENT_PORT_SPAN;
-    }
-    return h->leg_count >= pipes;
+    return h->chosen == KENT_BLOCK_AND_JOINTS &&
+           way->load <= h->joints_share * w->factored[KENT_RESULTANT] * (1.0 + TIE);
 }
 
 void kent_other_ways_take(const kent_holding_work *w, kent_holding *h)
 {
-    const bool turns = kent_fitting_has_shut_legs(w->m, w->fitting);
-
     for (size_t i = 0; i < h->other_way_count; i++) {
         kent_other_way *way = &h->other_ways[i];
         if (!h->held) continue;
         if (h->soil_beside) {
             way->taken = KENT_TAKEN_BY_FACE; /* of the trench's other side */
         } else if (h->chosen == KENT_RESTRAINED_JOINTS) {
-            way->taken = turns && !all_legs_restrained(w, h) ? KENT_TAKEN_BY_NOTHING
-                                                             : KENT_TAKEN_BY_JOINTS;
+            way->taken = KENT_TAKEN_BY_JOINTS; /* of all legs where legs can be shut */
         } else if (h->block.type != KENT_BLOCK_NONE) {
             way->friction = block_friction(w, h, way);
-            way->taken = taken_by_block(w, h, way);
+            way->taken = taken_by_joints(w, h, way) ? KENT_TAKEN_BY_JOINTS
+                                                    : taken_by_block(w, h, way);
         }
+    }
+}
+
+bool kent_other_way_bars(const kent_other_way *way)
+{
+    return way->taken == KENT_TAKEN_BY_NOTHING && !way->slight;
+}
+
+void kent_other_ways_judge(kent_holding_work *w, kent_holding *h)
+{
+    for (size_t i = 0; i < h->other_way_count && h->held; i++) {
+        if (!kent_other_way_bars(&h->other_ways[i])) continue;
+        const double area = h->block.bearing_area;
+        w->fault = KENT_FAULT_OTHER_WAY;
+        w->barred = &h->other_ways[i];
+        h->held = false;
+        h->block = kent_block_none();
+        h->block.bearing_area = area;
+        h->stability = (kent_stability){0};
+        h->utilisation = NAN;
+        h->factor_reached = NAN;
     }
 }
 
@@ -177,48 +198,68 @@ static kent_said force(const kent_holding_work *w, double value)
     return kent_said_of(KENT_FORCE, w->m->units, value);
 }
 
+static bool pulls_back(const kent_other_way *way)
+{
+    return way->turned >= PI - ONE_WAY * (1.0 + 1e-9);
+}
+
 /* What would take a push that the face does not bear. */
 static void add_remedy(const kent_holding_work *w, const kent_holding *h,
                        const kent_other_way *way, kent_text *t)
 {
-    if (isnan(way->friction)) {
-        kent_text_add(
-            t, "nothing here is sized for it. Tie the fitting by straps or rods "
-               "to a block that holds it: give base_friction of the soil to have "
-               "the block's own weight judged");
+    const kent_load_case *c = &w->loads->cases[way->load_case];
+
+    if (isnan(way->friction) || !(w->soil->base_friction > 0.0)) {
+        kent_text_add(t, "give base_friction of the soil, to have the block's own "
+                         "weight judged");
     } else {
+        const double lifted = c->safety_factor * fmax(0.0, way->thrust.z);
         kent_text_add(t,
-                      "the block's weight takes %s of the %s that it asks for. Tie the "
-                      "fitting by straps or rods to a block of %s",
+                      "the block's weight takes %s of the %s that it asks for; tie the "
+                      "fitting by straps or rods to one that weighs %s where it stands",
                       force(w, way->friction).s, force(w, way->load).s,
-                      kent_said_of(KENT_VOLUME, w->m->units,
-                                   h->block.volume * way->load / way->friction)
-                          .s);
+                      force(w, way->load / w->soil->base_friction + lifted).s);
     }
-    if (h->leg_count == 0) return;
-    kent_text_add(t, ", or restrain the joints over %s",
-                  kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s);
+    if (pulls_back(way) && h->chosen != KENT_ANCHOR_BLOCK) {
+        kent_text_add(t, ", or write restraint = \"anchor-block\", which bears on both "
+                         "its sides");
+    }
+}
+
+static void add_way(const kent_holding_work *w, const kent_other_way *way, kent_text *t)
+{
+    kent_text_add(t, "'%s' pulls %s, with %s sideways before any factor",
+                  w->loads->cases[way->load_case].title.s,
+                  pulls_back(way) ? "the other way" : "another way",
+                  force(w, way->sideways).s);
+}
+
+void kent_other_way_refuse(const kent_holding_work *w, const kent_holding *h,
+                           kent_text *t)
+{
+    kent_text_add(t, "no block: ");
+    add_way(w, w->barred, t);
+    kent_text_add(t, ", and its face does not bear that way; ");
+    add_remedy(w, h, w->barred, t);
 }
 
 static void say_way(const kent_holding_work *w, kent_holding *h,
                     const kent_other_way *way)
 {
-    const kent_load_case *c = &w->loads->cases[way->load_case];
-    const bool back = way->turned >= PI - ONE_WAY * (1.0 + 1e-9);
     kent_text t = {0};
 
-    kent_text_add(&t, "'%s' pulls %s, with %s sideways before any factor: ", c->title.s,
-                  back ? "the other way" : "another way", force(w, way->sideways).s);
+    add_way(w, way, &t);
     switch (way->taken) {
     case KENT_TAKEN_BY_FRICTION:
         kent_text_add(&t,
-                      "the block's weight takes it on its base (%s of the %s asked), "
+                      ": the block's weight takes it on its base (%s of the %s asked), "
                       "once straps or rods tie the fitting to it",
                       force(w, way->friction).s, force(w, way->load).s);
         break;
-    case KENT_TAKEN_BY_NOTHING:
-        kent_text_add(&t, "the face does not bear that way, and ");
-        add_remedy(w, h, way, &t);
+    case KENT_TAKEN_BY_NOTHING: /* slight: else it is refused */
+        kent_text_add(&t, ", and the face does not bear that way: so little is left to "
+                          "the fill beside the pipe, unless straps or rods tie the "
+                          "fitting to a block that holds it");
         break;
     case KENT_TAKEN_BY_FACE:
     case KENT_TAKEN_BY_JOINTS:
@@ -235,18 +276,7 @@ static void say_shut_legs(const kent_holding_work *w, kent_holding *h)
     const kent_other_way *way = &h->other_ways[0];
     const char *name = w->loads->cases[way->load_case].title.s;
 
-    if (h->chosen == KENT_RESTRAINED_JOINTS) {
-        if (way->taken == KENT_TAKEN_BY_JOINTS) return;
-        h->held = false;
-        kent_notes_add(&h->cautions,
-                       "its legs can be shut one by one, and '%s' pulls another way, "
-                       "with %s sideways before any factor: restrain the joints of all "
-                       "its legs, over %s each, or name in can_close those that have "
-                       "a valve",
-                       name, force(w, way->sideways).s,
-                       kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s);
-        return;
-    }
+    if (h->chosen == KENT_RESTRAINED_JOINTS) return; /* each leg is restrained */
     kent_notes_add(
         &h->cautions,
         "its legs can be shut one by one, and '%s' pushes another way, with "

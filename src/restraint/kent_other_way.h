@@ -23,9 +23,14 @@ typedef struct kent_other_way {
     double time;      /* s; NAN outside marches */
     double turned;    /* rad from the way of what governs sideways, 0 .. pi */
     double friction;  /* N that the block's weight takes on its base; NAN: not known */
+    bool slight;      /* suction, and less than a tenth of what governs, factored */
     kent_taken taken;
 } kent_other_way;
 
 enum { KENT_OTHER_WAYS = 8 };
+
+/* Whether nothing takes it although something must: the fitting is not held then.
+ * source docs/theory/09-load-cases.md, 9.21 */
+bool kent_other_way_bars(const kent_other_way *way);
 
 #endif

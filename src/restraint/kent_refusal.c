@@ -35,7 +35,7 @@ static void joints_offer(const kent_holding_work *w, const kent_holding *h,
     }
     kent_text_add(t, "restrained joints over %s %s%s",
                   kent_said_of(KENT_LENGTH, w->m->units, h->restrained_length).s,
-                  kent_leg_rule_of(w->fitting)->says,
+                  kent_leg_rule_of(w->m, w->fitting)->says,
                   fits ? "" : " and beyond what they meet");
 }
 
@@ -373,6 +373,10 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
         return;
     case KENT_FAULT_STABILITY:
         refuse_unstable(w, h, t);
+        break;
+    case KENT_FAULT_OTHER_WAY:
+        kent_other_way_refuse(w, h, t);
+        kent_text_add(t, ", or ");
         break;
     case KENT_FAULT_FACE:
         refuse_face(w, h, t);

@@ -82,8 +82,9 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_stability_tell(w, h);
         kent_holding_routes(w, h);
         kent_holding_legs(w, h);
-        kent_holding_footprint(w, h);
         kent_other_ways_take(w, h);
+        kent_other_ways_judge(w, h);
+        kent_holding_footprint(w, h);
         kent_holding_refuse(w, h);
         kent_concrete_finish(w, h);
     }

@@ -16,7 +16,7 @@ static const double TOUCH = 1e-6;
 static const double BESIDE = 30.0;
 
 /* What is told of one fitting before the rest is only counted. */
-enum { TOLD = 4, GROUNDS = 4 }; /* both sides of a block, and two legs */
+enum { TOLD = 4, GROUNDS = 4 }; /* all sides of a block; two of it, and two legs */
 
 typedef struct item {
     size_t fitting;
@@ -60,15 +60,12 @@ static void item_block(item *it, const kent_footprint *at)
     const double reach = kent_wedge_reach(&at->wedge);
     const double far = at->wedge.front + reach;
     const double wide = kent_wedge_half_width(&at->wedge, reach);
-    for (int side = 1; side >= (at->both_ways ? -1 : 1); side -= 2) {
-        const kent_taper ground = {it->x,
-                                   it->y,
-                                   side * ux,
-                                   side * uy,
-                                   at->wedge.front,
-                                   far,
-                                   at->wedge.half_width,
-                                   wide};
+    const double ways[GROUNDS][2] = {{ux, uy}, {-ux, -uy}, {-uy, ux}, {uy, -ux}};
+    const int sides = at->all_round ? 4 : at->both_ways ? 2 : 1;
+    for (int side = 0; side < sides; side++) {
+        const kent_taper ground = {
+            it->x,           it->y, ways[side][0],        ways[side][1],
+            at->wedge.front, far,   at->wedge.half_width, wide};
         item_ground(it, kent_convex_taper(&ground));
     }
     it->radius = fmax(it->radius, hypot(far, wide));

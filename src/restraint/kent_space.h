@@ -14,6 +14,7 @@ typedef struct kent_footprint {
     double behind, front, half_width; /* m of the concrete, from the fitting's centre;
                                          half_width 0: no concrete */
     bool leans, both_ways;            /* a face leans along it, or against it too */
+    bool all_round;                   /* and square to it */
     kent_wedge wedge;                 /* of that face */
     bool pipe_leans;   /* a bend with restrained joints leans on its trench: */
     double side_from;  /* m from the axis: the side of the pipe */

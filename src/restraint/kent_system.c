@@ -65,13 +65,14 @@ static bool collect(kent_system_work *w)
         const bool joints =
             h->chosen == KENT_RESTRAINED_JOINTS || h->chosen == KENT_BLOCK_AND_JOINTS;
         if (!joints || h->needs_nothing || h->leg_count == 0) continue;
-        const bool either = kent_leg_rule_of(f)->either;
+        const bool either = kent_leg_rule_of(w->m, f)->either;
         const size_t first = either ? leg_chosen(w->m, f, h) : 0;
         const size_t end = either ? first + 1 : h->leg_count;
         for (size_t k = first; k < end; k++) {
             if (!add_leg(w, i, k, h->legs[k].port, h->legs[k].reach)) return false;
         }
-        if (f->type == KENT_TEE && !add_run(w, i)) return false;
+        const bool run = f->type == KENT_TEE && !kent_fitting_has_shut_legs(w->m, f);
+        if (run && !add_run(w, i)) return false;
     }
     return true;
 }

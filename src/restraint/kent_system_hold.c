@@ -52,7 +52,7 @@ static double gives_along(const kent_system_work *w, const kent_system_leg *leg,
     const kent_fitting *f = &w->m->fittings[leg->fitting];
     const kent_leg *own = own_leg(w, leg);
     kent_leg_work work = {.factor = own->factor,
-                          .bend = kent_leg_rule_of(f)->bend,
+                          .bend = kent_leg_rule_of(w->m, f)->bend,
                           .bears = own->bears,
                           .form = own->form,
                           .demand = INFINITY,

@@ -91,33 +91,140 @@ static void a_balanced_cross_is_told(void **state)
     kent_net_clear(&n);
 }
 
-/* Every leg is pushed or pulled in its turn: held only where all are restrained. */
-static void joints_hold_a_cross_on_all_its_legs_alone(void **state)
+/* Values for restrained lengths. */
+static void put_grip(kent_build *b)
 {
-    (void)state;
-    kent_build b = a_cross();
-    kent_soil *s = &b.model->soils[0];
+    kent_soil *s = &b->model->soils[0];
     s->friction_angle = 0.5;
     s->cohesion = 0.0;
     s->friction_ratio = 0.75;
     s->adhesion_ratio = 0.0;
     s->passive_ratio = 0.4;
-    for (size_t i = 0; i < b.model->pipe_count; i++)
-        b.model->pipes[i].unit_mass = 70.0;
+    for (size_t i = 0; i < b->model->pipe_count; i++) {
+        b->model->pipes[i].unit_mass = 70.0;
+        b->model->pipes[i].joint = KENT_RESTRAINED;
+        b->model->pipes[i].laying_length = 6.0;
+    }
+}
+
+/* Every leg is pushed or pulled in its turn, and each needs a length: that of p A alone
+ * on its whole perimeter, as behind a dead end. */
+static void joints_hold_a_cross_on_all_its_legs(void **state)
+{
+    (void)state;
+    kent_build b = a_cross();
+    put_grip(&b);
     const int note = kent_build_note(&b, "X");
     b.model->notes[note].restraint = KENT_RESTRAINED_JOINTS;
     kent_net n = kent_net_of(b);
     kent_restraints *r;
     const kent_holding *h = sized(&n, "X", &r);
-    assert_true(h->leg_count > 0);
-    if (h->leg_count == 4) {
-        assert_int_equal(h->other_ways[0].taken, KENT_TAKEN_BY_JOINTS);
-    } else {
-        assert_false(h->held);
-        kent_hand_expect(h, "restrain the joints of all its legs");
+    const double push = RHO * G * 50.0 * area(0.32);
+    assert_int_equal(h->leg_count, 4);
+    assert_true(h->held);
+    for (size_t k = 0; k < 4; k++) {
+        assert_int_equal(h->legs[k].port, k);
+        assert_close(h->legs[k].demand, 1.5 * push, 1e-9);
+        assert_close(h->legs[k].length, h->legs[0].length, 1e-9);
+        assert_true(!h->legs[k].bears && h->legs[k].length > 1.0);
     }
+    for (size_t i = 0; i < h->other_way_count; i++) {
+        assert_int_equal(h->other_ways[i].taken, KENT_TAKEN_BY_JOINTS);
+    }
+    kent_hand_expect(h, "restrained length on each leg");
+    assert_false(kent_hand_says(h, "takes no credit for the run"));
     kent_restraints_free(r);
     kent_net_clear(&n);
+}
+
+/* Nobody knows how one leg lies: the cross is not held, whatever the others do. */
+static void a_cross_with_a_leg_that_nothing_holds_is_refused(void **state)
+{
+    (void)state;
+    kent_build b = a_cross();
+    put_grip(&b);
+    const int note = kent_build_note(&b, "X");
+    b.model->notes[note].restraint = KENT_RESTRAINED_JOINTS;
+    b.model->pipes[3].unit_mass = (double)NAN; /* the leg to S */
+    b.model->pipes[3].material_density = (double)NAN;
+    kent_net n = kent_net_of(b);
+    kent_restraints *r;
+    const kent_holding *h = sized(&n, "X", &r);
+    assert_false(h->held);
+    assert_int_equal(r->not_held, 2); /* and the end at S */
+    kent_hand_expect(h, "the mass of the pipe is not known");
+    kent_restraints_free(r);
+    kent_net_clear(&n);
+}
+
+/* R - T - E with a branch to N; the leg to E can be shut. Empty, it leaves T pushed by
+ * the run and the branch, so that the run counts nothing for the branch. */
+static void a_tee_whose_run_can_be_shut_has_three_legs(void **state)
+{
+    (void)state;
+    kent_build b = kent_build_new();
+    b.model->water.density = RHO;
+    b.model->gravity = G;
+    (void)kent_build_point(&b, "R", 0.0, 0.0, 10.0);
+    (void)kent_build_point(&b, "T", 100.0, 0.0, 10.0);
+    (void)kent_build_point(&b, "E", 200.0, 0.0, 10.0);
+    (void)kent_build_point(&b, "N", 100.0, 100.0, 10.0);
+    (void)kent_build_pipe(&b, "A", "R T E", 0.3, 1000.0);
+    (void)kent_build_pipe(&b, "C", "T N", 0.2, 1000.0);
+    (void)kent_build_fixed_level(&b, "R", 60.0);
+    (void)kent_build_soil(&b, "sand", 100e3, 18e3, 1.2);
+    put_grip(&b);
+    const int note = kent_build_note(&b, "T");
+    kent_fitting_note *t = &b.model->notes[note];
+    t->restraint = KENT_RESTRAINED_JOINTS;
+    t->stated.run_length[0] = t->stated.run_length[1] = 12.0;
+    t->stated.closes_stated = true;
+    t->stated.closes_count = 1;
+    b.model->closes = kent_alloc(1, sizeof *b.model->closes);
+    assert_non_null(b.model->closes);
+    b.model->closes[0] = 2; /* E */
+    b.model->closes_count = 1;
+    b.model->rules.run_share = 0.5;
+    kent_net n = kent_net_of(b);
+    kent_restraints *r;
+    const kent_holding *h = sized(&n, "T", &r);
+    const double p = RHO * G * 50.0, wide = p * area(0.32), narrow = p * area(0.22);
+    assert_int_equal(h->leg_count, 3);
+    for (size_t k = 0; k < 3; k++) {
+        assert_close(h->legs[k].demand, 1.5 * hypot(wide, narrow), 1e-9);
+        assert_true(h->legs[k].credit == 0.0);
+    }
+    assert_true(h->held);
+    kent_hand_expect(h, "its legs can be shut");
+    kent_restraints_free(r);
+    kent_net_clear(&n);
+}
+
+/* What stands in the ground beside a cross, on any of its sides, keeps a block away. */
+static void obstacles_are_looked_for_on_every_side_of_a_cross(void **state)
+{
+    (void)state;
+    static const double WAYS[][2] = {{1, 0}, {-1, 0}, {0, 1}, {0, -1}};
+    for (size_t i = 0; i < sizeof WAYS / sizeof WAYS[0]; i++) {
+        for (int far = 0; far < 2; far++) {
+            kent_build b = a_cross();
+            const int note = kent_build_note(&b, "X");
+            b.model->obstacles = kent_alloc(1, sizeof *b.model->obstacles);
+            assert_non_null(b.model->obstacles);
+            b.model->obstacles[0] =
+                (kent_obstacle){.direction = {WAYS[i][0], WAYS[i][1], 0.0},
+                                .distance = far ? 30.0 : 2.0,
+                                .depth = 2.5};
+            b.model->obstacle_count = 1;
+            b.model->notes[note].obstacle_count = 1;
+            kent_net n = kent_net_of(b);
+            kent_restraints *r;
+            const kent_holding *h = sized(&n, "X", &r);
+            assert_int_equal(h->held, far);
+            kent_restraints_free(r);
+            kent_net_clear(&n);
+        }
+    }
 }
 
 /* ---- suction --------------------------------------------------------------------- */
@@ -173,9 +280,9 @@ static void a_blocks_weight_takes_a_pull_on_its_base(void **state)
     kent_build_clear(&b);
 }
 
-/* Eight times that, and then with no friction known: nothing takes it, and what would
- * is said. The face is none the larger for it. */
-static void what_nothing_takes_is_said_with_what_would(void **state)
+/* Eight times that is 0.16 of the thrust, which nothing takes: not held, whether the
+ * soil's friction is known or not, and what would hold it is said. */
+static void what_nothing_takes_is_not_held(void **state)
 {
     (void)state;
     kent_build with = a_bend(0.4), without = a_bend((double)NAN);
@@ -187,8 +294,14 @@ static void what_nothing_takes_is_said_with_what_would(void **state)
     assert_int_equal(unknown->other_ways[0].taken, KENT_TAKEN_BY_NOTHING);
     assert_true(isnan(unknown->other_ways[0].friction));
     assert_true(known->other_ways[0].friction < load);
-    kent_hand_expect(known, "'suction' pulls the other way, with 34.2 kN sideways");
-    kent_hand_expect(known, "Tie the fitting by straps or rods to a block of");
+    assert_false(known->held || unknown->held);
+    assert_int_equal(known->block.type, KENT_BLOCK_NONE);
+    assert_true(known->block.bearing_area > 0.0);
+    assert_true(isnan(known->utilisation) && !known->stability.judged);
+    assert_true(a->not_held >= 1 && !known->footprint.placed);
+    kent_hand_expect(known, "no block: 'suction' pulls the other way, with 34.2 kN");
+    kent_hand_expect(known, "to one that weighs 128.1 kN"); /* 51.3 kN / 0.4 */
+    kent_hand_expect(known, "restraint = \"anchor-block\"");
     kent_hand_expect(unknown, "give base_friction");
     assert_close(known->design_thrust, 1.5 * 2.0 * 5e5 * area(0.62) * sin(0.25 * PI),
                  1e-9);
@@ -196,6 +309,48 @@ static void what_nothing_takes_is_said_with_what_would(void **state)
     kent_restraints_free(b);
     kent_build_clear(&with);
     kent_build_clear(&without);
+}
+
+/* Suction below a tenth of what governs is left to the fill, and said; what pushes with
+ * the water's pressure is not, however little. */
+static void slight_suction_alone_is_left_to_the_fill(void **state)
+{
+    (void)state;
+    static const struct {
+        double pull; /* Pa */
+        bool held;
+    } rows[] = {{-49e3, true}, {-51e3, false}};
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        kent_build b = a_bend((double)NAN);
+        kent_restraints *r = sucked(&b, rows[i].pull);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_int_equal(h->held, rows[i].held);
+        assert_int_equal(h->other_ways[0].taken, KENT_TAKEN_BY_NOTHING);
+        assert_int_equal(h->other_ways[0].slight, rows[i].held);
+        kent_hand_expect(h, rows[i].held ? "left to the fill beside the pipe"
+                                         : "its face does not bear that way");
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+    const kent_other_way pushed = {.taken = KENT_TAKEN_BY_NOTHING, .slight = false};
+    assert_true(kent_other_way_bars(&pushed));
+}
+
+/* Of block and joints, half each: the joints' half is more than a suction of 0.16. */
+static void joints_beside_a_block_take_the_pull(void **state)
+{
+    (void)state;
+    kent_build b = a_bend((double)NAN);
+    put_grip(&b);
+    const int note = kent_build_note(&b, "B");
+    b.model->notes[note].restraint = KENT_BLOCK_AND_JOINTS;
+    b.model->notes[note].stated.block_share = 0.5;
+    kent_restraints *r = sucked(&b, -80e3);
+    const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+    assert_true(h->held);
+    assert_int_equal(h->other_ways[0].taken, KENT_TAKEN_BY_JOINTS);
+    kent_restraints_free(r);
+    kent_build_clear(&b);
 }
 
 /* An anchor block bears from either side. */
@@ -449,9 +604,14 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_cross_is_held_on_every_side),
         cmocka_unit_test(a_balanced_cross_is_told),
-        cmocka_unit_test(joints_hold_a_cross_on_all_its_legs_alone),
+        cmocka_unit_test(joints_hold_a_cross_on_all_its_legs),
+        cmocka_unit_test(a_cross_with_a_leg_that_nothing_holds_is_refused),
+        cmocka_unit_test(a_tee_whose_run_can_be_shut_has_three_legs),
+        cmocka_unit_test(obstacles_are_looked_for_on_every_side_of_a_cross),
         cmocka_unit_test(a_blocks_weight_takes_a_pull_on_its_base),
-        cmocka_unit_test(what_nothing_takes_is_said_with_what_would),
+        cmocka_unit_test(what_nothing_takes_is_not_held),
+        cmocka_unit_test(slight_suction_alone_is_left_to_the_fill),
+        cmocka_unit_test(joints_beside_a_block_take_the_pull),
         cmocka_unit_test(an_anchor_block_bears_the_pull_on_its_other_side),
         cmocka_unit_test(a_slight_pull_is_not_told),
         cmocka_unit_test(an_empty_run_is_not_counted_on),
