@@ -44,6 +44,7 @@ static void set_case(kent_object *o, const kent_string_end *e, const kent_pull_e
                     kent_json_real(c ? p->of_pressure_mean : NAN));
     kent_object_set(o, "of_end_face_N", kent_json_real(c ? p->of_end_face : NAN));
     kent_object_set(o, "of_cooling_N", kent_json_real(c ? p->of_cooling : NAN));
+    kent_object_set(o, "of_string_N", kent_json_real(c ? p->of_string : NAN));
     kent_object_set(o, "modulus_Pa", kent_json_real(c ? p->modulus : NAN));
     kent_object_set(o, "pull_N", kent_json_real(c ? p->pull : NAN));
     kent_object_set(o, "design_pull_N", kent_json_real(c ? p->factored : NAN));

@@ -45,13 +45,17 @@ typedef struct kent_pull_end {
     double modulus;   /* Pa, of the cooling: lasting or short by the case */
     double wall_area; /* m2 */
     double of_pressure, of_end_face, of_cooling, pull; /* N, before any factor */
-    double of_pressure_mean;                           /* N, the handbooks' */
-    double factored;                                   /* N: what an anchor takes */
-    double friction;    /* N/m, of the ground along the string, mean; NAN: none */
-    double development; /* m; NAN */
+    double
+        of_string; /* N of it, that other pipes of the string add to the last one's */
+    double of_pressure_mean; /* N, the handbooks' */
+    double factored;         /* N: what an anchor takes */
+    double friction;         /* N/m, of the ground along the string, mean; NAN: none */
+    double development;      /* m; NAN */
     double movement; /* m, of an end that nothing holds, the most of all cases; NAN */
     size_t moves;    /* the case of that, */
     double moving_pull, moving_modulus; /* N, Pa in it */
+    int moving_pipe;      /* of the string, which moves it most in that case, */
+    double moving_area;   /* m2 of its wall */
     bool bounded;         /* the string is longer than twice the development */
     double beyond_length; /* m of the pipe beyond to be restrained; NAN */
     int beyond_pipes;     /* whole ones; 0: no pipe length known */

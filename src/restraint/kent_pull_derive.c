@@ -63,9 +63,11 @@ static void derive_face(const kent_string_end *e, const kent_pull_end *at,
                          "23.3", "pressure on the end of the wall, within the seal");
 }
 
-static void derive_free(const kent_string_end *e, double string_length,
-                        const kent_pull_end *at, kent_derivation *d)
+static void derive_free(const kent_model *m, const kent_string_end *e,
+                        double string_length, const kent_pull_end *at,
+                        kent_derivation *d)
 {
+    const bool other = at->moving_pipe != m->spans[e->span].pipe;
     const kent_string_case *moves = &e->cases[at->moves];
     char says[160];
 
@@ -91,8 +93,16 @@ static void derive_free(const kent_string_end *e, double string_length,
     kent_derivation_put(d, "Pm", at->moving_pull, KENT_FORCE, KENT_COMPUTED, says);
     kent_derivation_put(d, "Em", at->moving_modulus, KENT_STRESS, KENT_CATALOGUE,
                         "modulus in that case");
+    if (other) {
+        (void)snprintf(says, sizeof says,
+                       "wall of pipe \"%.60s\", which moves it most of the string's",
+                       m->pipes[at->moving_pipe].id);
+        kent_derivation_put(d, "Am", at->moving_area, KENT_AREA, KENT_COMPUTED, says);
+    }
     kent_derivation_work(d, "dm", at->movement, KENT_DIAMETER,
-                         bounded ? "Pm^2/(2*f*Em*Aw)" : "(Pm*Ls/2 - f*Ls^2/8)/(Em*Aw)",
+                         bounded ? other ? "Pm^2/(2*f*Em*Am)" : "Pm^2/(2*f*Em*Aw)"
+                         : other ? "(Pm*Ls/2 - f*Ls^2/8)/(Em*Am)"
+                                 : "(Pm*Ls/2 - f*Ls^2/8)/(Em*Aw)",
                          bounded ? "23.7" : "23.8", "movement of a free end");
 }
 
@@ -119,13 +129,19 @@ void kent_pull_end_derive(const kent_model *m, const kent_string_end *e,
                          "the same by the mean diameter, as in handbooks");
     derive_face(e, at, d);
     derive_cooling(m, p, c, at, d);
-    kent_derivation_work(d, "P", at->pull, KENT_FORCE, "max(0, Pp + Pe + Pt)", "23.5",
-                         "pull of an end that is held");
+    if (at->of_string > 0.0) {
+        kent_derivation_put(d, "Ps", at->of_string, KENT_FORCE, KENT_COMPUTED,
+                            "what other pipes of the string add (23.17, 23.18)");
+    }
+    kent_derivation_work(d, "P", at->pull, KENT_FORCE,
+                         at->of_string > 0.0 ? "max(0, Pp + Pe + Pt + Ps)"
+                                             : "max(0, Pp + Pe + Pt)",
+                         "23.5", "pull of an end that is held");
     kent_derivation_put(d, "SF", c->safety_factor, KENT_RATIO, KENT_GIVEN, "factor");
     kent_derivation_work(d, "PF", at->factored, KENT_FORCE, "SF*P", "",
                          "factored: what an anchor takes, however long the string and "
                          "whatever the friction, for a held end does not move");
-    derive_free(e, string_length, at, d);
+    derive_free(m, e, string_length, at, d);
     if (!isnan(at->beyond_length)) {
         kent_derivation_heading(d, "Held by joints beyond instead");
         kent_derivation_put(d, "fb", at->factored / at->beyond_length,

@@ -11,69 +11,90 @@ static const double PI = 3.14159265358979323846;
 static const double TIE = 1e-12;
 
 typedef struct pull_parts {
-    double of_pressure, of_end_face, of_cooling, pull; /* N */
-    double modulus;                                    /* Pa */
+    double of_pressure, of_end_face, of_cooling, of_string, pull; /* N */
 } pull_parts;
 
-static double inside_of(const kent_pipe *p)
-{
-    return p->outside_diameter - 2.0 * p->wall;
-}
-
-/* Of cooling: what lasts for months relaxes in a plastic. A main that is filled and
- * tested may have cooled within the day, and a surge adds to that. source 23.4 */
-static double modulus_of(const kent_pipe *p, const kent_string_case *c)
-{
-    return c->lasts && !isnan(p->long_modulus) ? p->long_modulus : p->modulus;
-}
-
-static double or_nil(double value) { return isnan(value) ? 0.0 : value; }
-
-static pull_parts parts_of(const kent_model *m, const kent_string_end *e,
-                           const kent_string_case *c)
+static pull_parts parts_of(const kent_model *m, const kent_strings *strings,
+                           const kent_string_end *e, const kent_string_case *c)
 {
     const kent_pipe *p = &m->pipes[m->spans[e->span].pipe];
-    const double inside = inside_of(p);
+    const double inside = kent_pull_inside(p);
     const bool bolted = e->kind == KENT_STRING_TO_DEVICE;
-    pull_parts parts = {.modulus = modulus_of(p, c)};
+    pull_parts parts = {
+        .of_pressure = kent_pull_pressure_in(p, c),
+        .of_cooling = kent_pull_cooling_in(m, p, c),
+        /* nothing holds a closed end against the rest of its string */
+        .of_string =
+            e->kind == KENT_STRING_CLOSED ? 0.0 : kent_pull_of_string(m, strings, e, c),
+    };
 
-    parts.of_pressure = kent_pull_of_pressure(c->pressure, p->poisson, inside);
-    parts.of_cooling = or_nil(kent_pull_of_cooling(
-        parts.modulus, p->expansion, m->loads.cooling, kent_pull_wall_area(p)));
     if (e->kind == KENT_STRING_CLOSED) { /* 23.9: its own thrust stretches it */
         parts.of_end_face = -c->pressure * 0.25 * PI * inside * inside;
     } else if (!bolted) {
         parts.of_end_face =
             kent_pull_of_end_face(c->pressure, p->outside_diameter, inside);
     }
-    parts.pull =
-        fmax(0.0, parts.of_pressure + parts.of_end_face + parts.of_cooling); /* 23.5 */
+    parts.pull = fmax(0.0, parts.of_pressure + parts.of_end_face + parts.of_cooling +
+                               parts.of_string); /* 23.5 */
     return parts;
 }
 
 /* ---- which case ------------------------------------------------------------------ */
 
-static void find_governing(const kent_model *m, const kent_string_end *e,
-                           kent_pull_end *out)
+static void find_governing(const kent_model *m, const kent_strings *strings,
+                           const kent_string_end *e, kent_pull_end *out)
 {
+    const kent_pipe *p = &m->pipes[m->spans[e->span].pipe];
+
     for (size_t i = 0; i < e->case_count; i++) {
         const kent_string_case *c = &e->cases[i];
-        const pull_parts parts = parts_of(m, e, c);
+        const pull_parts parts = parts_of(m, strings, e, c);
         const double factored = c->safety_factor * parts.pull;
         if (i > 0 && !(factored > out->factored * (1.0 + TIE))) continue;
         out->governing = i;
-        out->modulus = parts.modulus;
+        out->modulus = kent_pull_modulus_in(p, c);
         out->of_pressure = parts.of_pressure;
         out->of_end_face = parts.of_end_face;
         out->of_cooling = parts.of_cooling;
+        out->of_string = parts.of_string;
         out->pull = parts.pull;
         out->factored = factored;
     }
 }
 
-/* How far it moves where nothing holds it, in the case that moves it most. */
-static void find_movement(const kent_model *m, const kent_string_end *e, double length,
-                          kent_pull_end *out)
+/* The case that moves it most, as if the whole string were of one of its pipes. */
+static void moved_by(const kent_model *m, const kent_strings *strings,
+                     const kent_string_end *e, int pipe, kent_pull_end *out)
+{
+    const kent_pipe *own = &m->pipes[m->spans[e->span].pipe], *p = &m->pipes[pipe];
+    const double length = strings->length[e->string];
+    const double area = kent_pull_wall_area(p);
+
+    if (kent_pull_lacking(p)[0] != '\0') return;
+    for (size_t i = 0; i < e->case_count; i++) {
+        const kent_string_case *c = &e->cases[i];
+        const pull_parts at = parts_of(m, strings, e, c);
+        const double outside = at.of_pressure + at.of_end_face + at.of_cooling -
+                               kent_pull_through(m, own, c);
+        const double pull = outside + kent_pull_through(m, p, c);
+        const double modulus = kent_pull_modulus_in(p, c);
+        if (!(pull > 0.0)) continue;
+        const double moves =
+            kent_pull_movement(pull, out->friction, modulus * area, length);
+        if (!isnan(out->movement) && !(moves > out->movement * (1.0 + TIE))) continue;
+        out->movement = moves;
+        out->moves = i;
+        out->moving_pull = pull;
+        out->moving_modulus = modulus;
+        out->moving_pipe = pipe;
+        out->moving_area = area;
+    }
+}
+
+/* How far it moves where nothing holds it: as if the whole string were of that of its
+ * pipes that moves it most. */
+static void find_movement(const kent_model *m, const kent_strings *strings,
+                          const kent_string_end *e, kent_pull_end *out)
 {
     double reach = NAN, friction = NAN;
 
@@ -83,17 +104,11 @@ static void find_movement(const kent_model *m, const kent_string_end *e, double 
     }
     out->friction = friction;
     out->development = kent_pull_development(out->pull, friction);
-    out->bounded = length >= 2.0 * out->development;
-    for (size_t i = 0; i < e->case_count; i++) {
-        const pull_parts parts = parts_of(m, e, &e->cases[i]);
-        if (!(parts.pull > 0.0)) continue;
-        const double moves = kent_pull_movement(parts.pull, friction,
-                                                parts.modulus * out->wall_area, length);
-        if (!isnan(out->movement) && !(moves > out->movement * (1.0 + TIE))) continue;
-        out->movement = moves;
-        out->moves = i;
-        out->moving_pull = parts.pull;
-        out->moving_modulus = parts.modulus;
+    out->bounded = strings->length[e->string] >= 2.0 * out->development;
+    moved_by(m, strings, e, m->spans[e->span].pipe, out);
+    for (size_t i = 0; i < strings->part_count; i++) {
+        const kent_string_part *part = &strings->parts[i];
+        if (part->string == e->string) moved_by(m, strings, e, part->pipe, out);
     }
 }
 
@@ -257,14 +272,20 @@ static void caution_holder(const kent_model *m, const kent_string_end *e,
     }
 }
 
-/* Which keys the pipe lacks; "" none. */
-static const char *keys_lacking(const kent_pipe *p)
+/* Pipes of the string that pull nobody knows how much. */
+static void caution_parts(const kent_model *m, const kent_strings *strings,
+                          const kent_string_end *e, kent_notes *cautions)
 {
-    if (!(p->outside_diameter > 0.0) || !(p->wall > 0.0)) {
-        return "outside_diameter and wall_thickness";
+    for (size_t i = 0; i < strings->part_count; i++) {
+        const kent_string_part *part = &strings->parts[i];
+        const kent_pipe *p = &m->pipes[part->pipe];
+        const char *lacking = kent_pull_lacking(p);
+        if (part->string != e->string || lacking[0] == '\0') continue;
+        kent_notes_add(cautions,
+                       "at %s the pull leaves out pipe \"%s\" of the same string: give "
+                       "its %s",
+                       m->points[e->point].id, p->id, lacking);
     }
-    if (isnan(p->poisson)) return "poisson_ratio";
-    return isnan(p->modulus) ? "modulus" : "";
 }
 
 void kent_pull_end_find(const kent_model *m, const kent_loads_result *loads,
@@ -273,7 +294,8 @@ void kent_pull_end_find(const kent_model *m, const kent_loads_result *loads,
     const kent_string_end *e = &loads->strings.ends[end];
     const kent_pipe *p = &m->pipes[m->spans[e->span].pipe];
     const kent_holding *h = e->fitting >= 0 ? &holdings[e->fitting] : NULL;
-    const char *lacking = keys_lacking(p);
+    const kent_strings *strings = &loads->strings;
+    const char *lacking = kent_pull_lacking(p);
 
     *out = (kent_pull_end){
         .end = end,
@@ -292,15 +314,16 @@ void kent_pull_end_find(const kent_model *m, const kent_loads_result *loads,
         return;
     }
     out->known = true;
-    find_governing(m, e, out);
+    find_governing(m, strings, e, out);
     if (e->case_count > 0) {
         out->of_pressure_mean =
             kent_pull_of_pressure_mean(e->cases[out->governing].pressure, p->poisson,
                                        p->outside_diameter, p->wall);
     }
-    find_movement(m, e, loads->strings.length[e->string], out);
+    find_movement(m, strings, e, out);
     find_beyond(m, e, out);
     out->holder = holder_of(m, e, h, out);
     caution_missing(m, e, &out->cautions);
+    caution_parts(m, strings, e, &out->cautions);
     caution_holder(m, e, out);
 }

@@ -13,6 +13,25 @@ void kent_pulls_clear(kent_pulls *p);
 /* One end of a string. */
 void kent_pull_end_find(const kent_model *m, const kent_loads_result *loads,
                         const kent_holding *holdings, size_t end, kent_pull_end *out);
+/* Poisson's pull of pressure in a pipe's wall, and that of cooling in some case, N; the
+ * modulus of it, Pa; the inside of the wall, m. What is not stated pulls nothing. */
+double kent_pull_pressure_in(const kent_pipe *p, const kent_string_case *c);
+double kent_pull_cooling_in(const kent_model *m, const kent_pipe *p,
+                            const kent_string_case *c);
+double kent_pull_modulus_in(const kent_pipe *p, const kent_string_case *c);
+double kent_pull_inside(const kent_pipe *p);
+
+/* Which keys a pipe lacks for its pull; "" none. */
+const char *kent_pull_lacking(const kent_pipe *p);
+
+/* N that the other pipes of a string add to the pull at one of its ends, >= 0. */
+double kent_pull_of_string(const kent_model *m, const kent_strings *strings,
+                           const kent_string_end *e, const kent_string_case *c);
+/* N that a pipe kept from shortening leaves along a string that is free to slide: the
+ * wall's pull less what the water pushes in its bore. source 23.17 */
+double kent_pull_through(const kent_model *m, const kent_pipe *p,
+                         const kent_string_case *c);
+
 void kent_pull_end_derive(const kent_model *m, const kent_string_end *e,
                           double string_length, kent_pull_end *p);
 

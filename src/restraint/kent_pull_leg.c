@@ -114,7 +114,8 @@ static void judge_leg(const kent_model *m, const kent_port *port, double reach,
 
     do {
         const kent_pipe *p = &m->pipes[way.pipe];
-        judge_part(m, p, RATED_JOINTS, loads, h);
+        const bool walls = p->joint == KENT_FUSED || p->joint == KENT_WELDED;
+        if (!walls || !isnan(p->joint_rating)) judge_part(m, p, RATED_JOINTS, loads, h);
         judge_part(m, p, RATED_WALLS, loads, h);
         left -= kent_along_left(m, way);
     } while (left > KENT_SAME_PLACE && kent_along_on(m, way, &way));

@@ -247,6 +247,16 @@ static void list_strings(string_work *w, const bool *listed, int *number,
         number[i] = (int)out->string_count;
         out->length[out->string_count++] = length[i];
     }
+    for (size_t i = 0; i < w->piece_count; i++) {
+        const string_piece *p = &w->pieces[i];
+        const int root = root_of(w->root, (int)i);
+        if (!listed[root]) continue;
+        out->parts[out->part_count++] = (kent_string_part){
+            .string = number[root],
+            .pipe = w->m->spans[p->span].pipe,
+            .length = w->m->chainage[p->stop[1]] - w->m->chainage[p->stop[0]],
+        };
+    }
     for (size_t first = 0, end; first < w->arm_count; first = end) {
         end = arms_at(w, first);
         if (goes_on_at(w, first, end)) continue;
@@ -296,9 +306,10 @@ kent_status kent_strings_find(const kent_model *m, kent_strings *out, kent_error
     double *length = kent_alloc(most, sizeof *length);
 
     found.length = kent_alloc(most, sizeof *found.length);
+    found.parts = kent_alloc(most, sizeof *found.parts);
     found.ends = kent_alloc(2, most * sizeof *found.ends);
     if (!w.fitting_at || !w.pieces || !w.root || !w.arms || !listed || !number ||
-        !length || !found.length || !found.ends) {
+        !length || !found.length || !found.parts || !found.ends) {
         (void)kent_error_nomem(err);
         goto done;
     }
@@ -332,5 +343,6 @@ void kent_strings_clear(kent_strings *s)
     }
     free(s->ends);
     free(s->length);
+    free(s->parts);
     *s = (kent_strings){0};
 }

@@ -43,9 +43,17 @@ typedef struct kent_string_end {
     size_t case_count;
 } kent_string_end;
 
+/* A stretch of one of a string's pipes. */
+typedef struct kent_string_part {
+    int string, pipe;
+    double length; /* m */
+} kent_string_part;
+
 typedef struct kent_strings {
     double *length; /* [string_count] m, of all its pipes */
     size_t string_count;
+    kent_string_part *parts; /* [part_count], of all strings */
+    size_t part_count;
     kent_string_end *ends; /* [end_count] by string, then span and chainage */
     size_t end_count;
 } kent_strings;

@@ -376,6 +376,91 @@ static void what_is_missing_is_named(void **state)
     work_clear(&w);
 }
 
+/* R ===== P = E ----- F: fused, then `length` m bolted or welded of another pipe. */
+static kent_build of_two_pipes(double string, double length, kent_joint joint)
+{
+    kent_build b = fused_to_iron(string);
+    b.model->points[2].at.x = string + length;
+    b.model->pipes[1].joint = joint;
+    b.model->pipes[1].modulus = 170e9;
+    b.model->pipes[1].poisson = 0.28;
+    b.model->pipes[1].expansion = 11.2e-6;
+    (void)kent_build_point(&b, "F", string + length + 500.0, 0.0, 0.0);
+    const int next = kent_build_pipe(&b, "next", "E F", 0.43, 1000.0);
+    b.model->pipes[next].material_density = 7050.0;
+    return b;
+}
+
+/* By the balance of the step between the two bores and of the iron's end: two metres of
+ * iron shorten by nothing, so that polyethylene pulls through them. */
+static void a_yielding_pipe_pulls_through_a_stiff_one(void **state)
+{
+    (void)state;
+    kent_build b = of_two_pipes(300.0, 2.0, KENT_FLANGED);
+    b.model->loads.cooling = 0.0;
+    work w = work_of(b);
+    const kent_pull_end *p = end_at(&w, "E");
+    const double pi_4 = 0.25 * PI, inside = OD - 2.0 * WALL;
+    const double wall = 2.0 * 0.45 * 16e5 * pi_4 * inside * inside;
+    const double iron = wall + 16e5 * pi_4 * (0.43 * 0.43 - inside * inside);
+    const double pull = iron + 16e5 * pi_4 * (0.45 * 0.45 - 0.43 * 0.43);
+
+    assert_close(p->pull, pull, 1e-9);
+    assert_true(p->of_string > 0.2 * pull);
+    assert_close(p->factored, 1.5 * pull, 1e-9);
+    /* and it is polyethylene that moves, not iron: in years of 7.8 bar */
+    const double lasts =
+        w.net.model->water.density * w.net.model->gravity * 80.0 / 16e5 * pull;
+    assert_string_equal(w.net.model->pipes[p->moving_pipe].id, "pe");
+    assert_close(p->moving_pull, lasts, 1e-9);
+    assert_close(p->movement,
+                 lasts * lasts / (2.0 * p->friction * 200e6 * PI * (OD - WALL) * WALL),
+                 1e-9);
+    assert_true(kent_hand_lines(&p->derivation, KENT_SI) > 8);
+    assert_true(kent_hand_lines(&p->derivation, KENT_US) > 8);
+    /* at the other end the iron, which hardly yields, adds next to nothing */
+    const kent_pull_end *other = end_at(&w, "R");
+    assert_true(other->of_string < 1e-3 * other->pull);
+    work_clear(&w);
+}
+
+/* Two kilometres of cold iron draw a short piece of polyethylene out at its end: what
+ * both change in length adds up to nothing between the held ends. */
+static void a_long_stiff_pipe_draws_a_short_yielding_one(void **state)
+{
+    (void)state;
+    work w = work_of(of_two_pipes(50.0, 2000.0, KENT_WELDED));
+    const kent_pull_end *p = end_at(&w, "R");
+    const double pi_4 = 0.25 * PI, inside = OD - 2.0 * WALL;
+    const double pressure =
+        w.net.loads->strings.ends[p->end].cases[p->governing].pressure;
+    const double soft = 1e9 * PI * (OD - WALL) * WALL;
+    const double stiff = 170e9 * PI * 0.44 * 0.01;
+    /* tension in either wall, from the end inwards */
+    const double in_soft = p->pull - pressure * pi_4 * (OD * OD - inside * inside);
+    const double in_stiff = in_soft + pressure * pi_4 * (0.43 * 0.43 - inside * inside);
+    const double of_soft = 2.0 * 0.45 * pressure * pi_4 * inside * inside;
+    const double of_stiff = 2.0 * 0.28 * pressure * pi_4 * 0.43 * 0.43;
+    const double soft_moves = (in_soft - of_soft) / soft - 1.8e-4 * 15.0;
+    const double stiff_moves = (in_stiff - of_stiff) / stiff - 11.2e-6 * 15.0;
+
+    assert_true(p->of_string > 0.1 * p->pull);
+    assert_close(50.0 * soft_moves, -2000.0 * stiff_moves, 1e-9);
+    work_clear(&w);
+}
+
+static void a_pipe_of_a_string_that_is_not_known_is_named(void **state)
+{
+    (void)state;
+    kent_build b = of_two_pipes(300.0, 2.0, KENT_FLANGED);
+    b.model->pipes[0].poisson = NAN;
+    work w = work_of(b);
+    assert_true(says(&end_at(&w, "E")->cautions,
+                     "leaves out pipe \"pe\" of the same string: give its "
+                     "poisson_ratio"));
+    work_clear(&w);
+}
+
 /* The string goes on through its bends, whose thrust its own wall carries. */
 static void a_bend_within_a_string_needs_no_block(void **state)
 {
@@ -529,6 +614,19 @@ static void ratings_are_held_against_every_case(void **state)
     work_clear(&w);
 }
 
+/* A fused or welded joint is as strong as its pipe: it has no rating of its own. */
+static void welds_need_no_rating_of_their_own(void **state)
+{
+    (void)state;
+    kent_build b = restrained_bend();
+    b.model->pipes[0].joint = KENT_WELDED;
+    work w = work_of(b);
+    const kent_holding *h = &w.r->fittings[kent_build_fitting_of(&w.net.build, "B")];
+    assert_false(kent_hand_says(h, "joint_rating"));
+    assert_true(kent_hand_says(h, "give its pressure_rating"));
+    work_clear(&w);
+}
+
 /* The leg beyond B runs on into a pipe of the same size made for less. */
 static void every_pipe_along_a_leg_must_be_rated(void **state)
 {
@@ -568,11 +666,15 @@ int main(void)
         cmocka_unit_test(too_short_a_pipe_beyond_does_not),
         cmocka_unit_test(a_closed_end_holds_itself),
         cmocka_unit_test(what_is_missing_is_named),
+        cmocka_unit_test(a_yielding_pipe_pulls_through_a_stiff_one),
+        cmocka_unit_test(a_long_stiff_pipe_draws_a_short_yielding_one),
+        cmocka_unit_test(a_pipe_of_a_string_that_is_not_known_is_named),
         cmocka_unit_test(a_bend_within_a_string_needs_no_block),
         cmocka_unit_test(every_refused_allocation_is_reported),
         cmocka_unit_test(thrust_leaves_a_stress_along_the_wall),
         cmocka_unit_test(joints_and_pipes_must_be_rated),
         cmocka_unit_test(ratings_are_held_against_every_case),
+        cmocka_unit_test(welds_need_no_rating_of_their_own),
         cmocka_unit_test(every_pipe_along_a_leg_must_be_rated),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
