@@ -230,6 +230,8 @@ void kent_fill_concrete_check(kent_filling *f)
                                KENT_STRENGTH, "a low class; no concrete stated");
     }
     kent_fill_assume(
-        f, "contact of fittings", "0.25 by 0.71 diameters",
-        "what any bend or cap presses on, where no contact_area is stated");
+        f, "contact of fittings",
+        "0.71 diameters across; along the pipe 0.25, of a bend 1.5 sin(half its turn), "
+        "of a tee its branch, of a cap 0.71",
+        "what they surely press on, where no contact_area is stated");
 }

@@ -36,13 +36,40 @@ static bool is_tested(const kent_fitting_loads *loads)
     return false;
 }
 
+double kent_concrete_body(const kent_holding_work *w)
+{
+    const kent_fitting *f = w->fitting;
+    const double od = w->site.diameter;
+
+    switch (f->type) {
+    case KENT_BEND:
+        return 1.5 * sin(0.5 * f->angle) * od;
+    case KENT_TEE:
+    case KENT_WYE:
+        return f->branch_size > 0.0 ? fmin(f->branch_size, od) : 0.0;
+    case KENT_DEAD_END:
+        return sqrt(0.5) * od;
+    case KENT_CROSS:
+    case KENT_REDUCER:
+    case KENT_VALVE:
+    case KENT_STRAIGHT:
+    case KENT_CURVE:
+    case KENT_GROUP:
+        break;
+    }
+    return 0.0;
+}
+
+/* A valve, and what the pipe passes through, press by a flange, feet or a ring. */
 static kent_face contact_of(const kent_holding_work *w)
 {
     const double area = w->fitting->stated.contact_area;
 
     if (area > 0.0) return kent_contact_of(area, w->site.diameter);
-    if (w->site.hole > 0.0) return (kent_face){NAN, NAN};
-    return kent_contact_usual(w->site.diameter);
+    if (w->site.hole > 0.0 || w->fitting->type == KENT_VALVE) {
+        return (kent_face){NAN, NAN};
+    }
+    return kent_contact_usual(w->site.diameter, kent_concrete_body(w));
 }
 
 void kent_concrete_prepare(kent_holding_work *w, const kent_holding *h)

@@ -12,8 +12,11 @@ static void caution_pressed(const kent_holding_work *w, kent_holding *h)
     if (!c->pressed) {
         if (!(c->load > 0.0)) return;
         kent_notes_add(&h->cautions,
-                       "the pipe passes through the block: a flange or ring on it must "
-                       "press on %s of its concrete, or more; state it as contact_area",
+                       "%s a flange or ring on it must press on %s of its concrete, or "
+                       "more; state it as contact_area",
+                       w->site.hole > 0.0
+                           ? "the pipe passes through the block:"
+                           : "what a valve presses on its block with is not known:",
                        kent_said_of(KENT_AREA, units, c->contact_needed).s);
         return;
     }

@@ -128,6 +128,27 @@ static void derive_pressing(const kent_holding_work *w, kent_holding *h, bool te
 
 /* ---- what the fitting presses on ------------------------------------------------- */
 
+/* How long the contact surely is: b1. */
+static void derive_body(const kent_holding_work *w, double along, kent_derivation *d)
+{
+    const kent_fitting *f = w->fitting;
+    const char *formula = "OD/4";
+
+    if (f->type == KENT_BEND) {
+        kent_derivation_put(d, "theta", f->angle, KENT_ANGLE, KENT_COMPUTED,
+                            "turn of the bend");
+        formula = "max(OD/4, 1.5*OD*sin(theta/2))";
+    } else if ((f->type == KENT_TEE || f->type == KENT_WYE) && f->branch_size > 0.0) {
+        kent_derivation_put(d, "db", f->branch_size, KENT_DIAMETER, KENT_COMPUTED,
+                            "bore of the branch");
+        formula = "max(OD/4, min(db, OD))";
+    } else if (f->type == KENT_DEAD_END) {
+        formula = "sqrt(0.5)*OD";
+    }
+    kent_derivation_work(d, "b1", along, KENT_LENGTH, formula, "19.4",
+                         "contact along the pipe, as nobody states it");
+}
+
 static void derive_contact(const kent_holding_work *w, const kent_concrete_check *c,
                            kent_derivation *d)
 {
@@ -136,8 +157,7 @@ static void derive_contact(const kent_holding_work *w, const kent_concrete_check
     kent_derivation_put(d, "OD", w->site.diameter, KENT_DIAMETER, KENT_COMPUTED,
                         "outside diameter of the fitting");
     if (c->contact_assumed) {
-        kent_derivation_work(d, "b1", a->width, KENT_LENGTH, "OD/4", "19.4",
-                             "contact along the pipe, as nobody states it");
+        derive_body(w, a->width, d);
         kent_derivation_work(d, "d1", a->height, KENT_LENGTH, "sqrt(0.5)*OD", "19.4",
                              "contact across it: a quarter of the way round");
     } else {

@@ -8,6 +8,10 @@
  * share of it h's block takes. */
 void kent_concrete_prepare(kent_holding_work *w, const kent_holding *h);
 
+/* m along the pipe that the shape of a fitting surely presses on; 0: nothing is known.
+ * source docs/theory 19.4 */
+double kent_concrete_body(const kent_holding_work *w);
+
 /* Whether the concrete takes what the fitting presses on it, where the case states on
  * what; h->concrete is what was looked at. */
 bool kent_concrete_bears(const kent_holding_work *w, kent_holding *h);

@@ -26,9 +26,10 @@ double kent_concrete_least_factor(kent_concrete_code code)
 
 /* ---- a fitting on its block ------------------------------------------------------ */
 
-kent_face kent_contact_usual(double diameter)
+kent_face kent_contact_usual(double diameter, double body)
 {
-    return (kent_face){.width = 0.25 * diameter, .height = sqrt(0.5) * diameter};
+    return (kent_face){.width = fmax(0.25 * diameter, body),
+                       .height = sqrt(0.5) * diameter};
 }
 
 kent_face kent_contact_of(double area, double diameter)

@@ -21,10 +21,10 @@ double kent_concrete_least_factor(kent_concrete_code code);
 
 /* ---- a fitting on its block ------------------------------------------------------ */
 
-/* What a fitting on a pipe of that outside diameter surely presses on, source
- * docs/theory 19.4; and a stated area (m2) as a rectangle no wider across than the pipe
- * is, source 19.5. */
-kent_face kent_contact_usual(double diameter);
+/* What a fitting on a pipe of that outside diameter surely presses on, body: m along it
+ * that its shape surely has (0: nothing is known), source docs/theory 19.4; and a
+ * stated area (m2) as a rectangle no wider across than the pipe is, source 19.5. */
+kent_face kent_contact_usual(double diameter, double body);
 kent_face kent_contact_of(double area, double diameter);
 
 /* Pa that concrete may be pressed with all over; > 0. source 19.6, 19.7 */

@@ -175,7 +175,7 @@ static void a_load_widens_by_the_geometry_of_en_1992(void **state)
 static void contacts(void **state)
 {
     (void)state;
-    kent_face c = kent_contact_usual(0.6);
+    kent_face c = kent_contact_usual(0.6, 0.1);
     assert_close(c.width, 0.15, 1e-12);
     assert_close(c.height, 0.42426, 1e-4);
     c = kent_contact_of(0.16, 0.6);
