@@ -79,11 +79,17 @@ static kent_exit command_run(kent_session *s)
     if (!code) code = open_folder(s);
     if (!code) code = kent_session_do_job(s);
     if (!code) code = write_results(s);
-    if (code || !s->options->strict || !s->results->limit_exceeded) return code;
-    (void)fprintf(stderr,
-                  "kentledge: --strict: a limit is exceeded (a rating, a lowest "
-                  "pressure, the vapour limit, a thin pipe pressed from "
-                  "outside, or a fitting that nothing holds)\n");
+    if (code || !s->options->strict) return code;
+    if (s->results->limit_exceeded) {
+        (void)fprintf(stderr,
+                      "kentledge: --strict: a limit is exceeded (a rating, a lowest "
+                      "pressure, the vapour limit, a thin pipe pressed from "
+                      "outside, or a fitting that nothing holds)\n");
+        return KENT_EXIT_LIMIT;
+    }
+    if (!s->results->incomplete) return code;
+    (void)fprintf(stderr, "kentledge: --strict: not complete: a load case is missing, "
+                          "and loads.waived does not say why\n");
     return KENT_EXIT_LIMIT;
 }
 

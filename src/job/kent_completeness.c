@@ -85,7 +85,8 @@ void kent_completeness_judge(kent_results *r)
         } else {
             r->incomplete = true;
             kent_notes_add(&r->cautions,
-                           "not complete: %s, or to waivers what = \"%s\" and a reason",
+                           "not complete: %s, or say why not by waived = ( ( \"%s\", "
+                           "\"...\" ) ) in loads",
                            ASKED[k].missing, n->what);
         }
     }

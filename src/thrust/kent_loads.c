@@ -171,54 +171,77 @@ static kent_load_case *loads_add_shut(const kent_model *m, const kent_fitting *f
     return loads_add_pressed(m, loads, most, name);
 }
 
+/* Of what asks for the most of soil and in full: how many cases they are. Where soil
+ * may bear more in some, what governs a face need not govern joints or a weight. */
+static size_t press_count(const kent_press most[2])
+{
+    const bool same =
+        most[0].kind == most[1].kind && most[0].pressure == most[1].pressure;
+    return isnan(most[0].pressure) ? 0 : same ? 1 : 2;
+}
+
 /* A valve or leg shut with the most that can press on one side and nothing behind (9.4,
  * 9.16). */
-static void loads_add_closed(const kent_recorder *r, const kent_site_test *test,
-                             size_t fitting, size_t side, kent_fitting_loads *loads)
+static void loads_add_closed_by(const kent_model *m, const kent_press *most,
+                                const kent_fitting *f, size_t side,
+                                kent_fitting_loads *loads)
 {
-    const kent_model *m = r->model;
-    const kent_fitting *f = &m->fittings[fitting];
-    const kent_press most = kent_press_most(r, test, fitting, side, false);
-    kent_instant i = kent_instant_at_rest(m, f, most.pressure, (int)side);
-    kent_load_case *c = loads_add_shut(m, f, side, "from", &most, loads);
+    kent_instant i = kent_instant_at_rest(m, f, most->pressure, (int)side);
+    kent_load_case *c = loads_add_shut(m, f, side, "from", most, loads);
 
-    i.time = most.time;
+    i.time = most->time;
     c->closed = true;
     c->pressed = side;
     case_fill(c, &i);
 }
 
+static void loads_add_closed(const kent_recorder *r, const kent_site_test *test,
+                             size_t fitting, size_t side, kent_fitting_loads *loads)
+{
+    const kent_press most[] = {kent_press_most(r, test, fitting, side, false, false),
+                               kent_press_most(r, test, fitting, side, false, true)};
+
+    for (size_t i = 0; i < press_count(most); i++) {
+        loads_add_closed_by(r->model, &most[i], &r->model->fittings[fitting], side,
+                            loads);
+    }
+}
+
 /* Of all legs but one, what asks for most. */
 static kent_press press_beside(const kent_recorder *r, const kent_site_test *test,
-                               size_t fitting, size_t dry)
+                               size_t fitting, size_t dry, bool in_full)
 {
     const kent_fitting *f = &r->model->fittings[fitting];
-    kent_press most = {.pressure = NAN};
+    kent_press most = {.pressure = NAN, .in_full = in_full};
 
     for (size_t k = 0; k < f->port_count; k++) {
         if (k == dry || r->model->ports[f->port_first + k].kind != KENT_PORT_SPAN) {
             continue;
         }
-        kent_press_take(r->model, &most, kent_press_most(r, test, fitting, k, false));
+        kent_press_take(r->model, &most,
+                        kent_press_most(r, test, fitting, k, false, in_full));
     }
     return most;
 }
 
-/* A leg shut and emptied, with the most that can press on all the others (9.16). */
+/* A leg shut and emptied, with the most that can press on all the others (9.16); none
+ * where no other leg is a pipe. */
 static void loads_add_emptied(const kent_recorder *r, const kent_site_test *test,
                               size_t fitting, size_t dry, kent_fitting_loads *loads)
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
-    const kent_press most = press_beside(r, test, fitting, dry);
+    const kent_press most[] = {press_beside(r, test, fitting, dry, false),
+                               press_beside(r, test, fitting, dry, true)};
 
-    if (isnan(most.pressure)) return; /* no other leg is a pipe */
-    kent_instant i = kent_instant_emptied(m, f, most.pressure, dry);
-    kent_load_case *c = loads_add_shut(m, f, dry, "to", &most, loads);
-    i.time = most.time;
-    c->emptied = true;
-    c->dry = dry;
-    case_fill(c, &i);
+    for (size_t i = 0; i < press_count(most); i++) {
+        kent_instant at = kent_instant_emptied(m, f, most[i].pressure, dry);
+        kent_load_case *c = loads_add_shut(m, f, dry, "to", &most[i], loads);
+        at.time = most[i].time;
+        c->emptied = true;
+        c->dry = dry;
+        case_fill(c, &at);
+    }
 }
 
 /* Each leg that can be shut: under pressure alone, where something behind it presses,
@@ -263,13 +286,16 @@ static void loads_add_extended(const kent_recorder *r, const kent_site_test *tes
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
     const size_t widest = kent_port_widest(&m->ports[f->port_first], f->port_count);
-    const kent_press most = kent_press_most(r, test, fitting, widest, true);
-    kent_load_case *c = loads_add_pressed(m, loads, &most, "branch extended");
+    const kent_press most[] = {kent_press_most(r, test, fitting, widest, true, false),
+                               kent_press_most(r, test, fitting, widest, true, true)};
 
-    c->extended = true;
-    kent_instant i = kent_instant_extended(m, f, c, most.pressure);
-    i.time = most.time;
-    case_fill(c, &i);
+    for (size_t i = 0; i < press_count(most); i++) {
+        kent_load_case *c = loads_add_pressed(m, loads, &most[i], "branch extended");
+        c->extended = true;
+        kent_instant at = kent_instant_extended(m, f, c, most[i].pressure);
+        at.time = most[i].time;
+        case_fill(c, &at);
+    }
 }
 
 /* ---- all of them ----------------------------------------------------------------- */
@@ -279,7 +305,7 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
-    const size_t most = 6 + m->state_count + m->march_count + 2 * KENT_PORTS;
+    const size_t most = 7 + m->state_count + m->march_count + 4 * KENT_PORTS;
 
     loads->cases = kent_alloc(most, sizeof *loads->cases);
     if (!loads->cases) return -1;

@@ -72,19 +72,21 @@ double kent_press_later(const kent_model *m, const kent_fitting *f)
     return from_gauge(m, f, m->loads.future_pressure, m->loads.future_gauge);
 }
 
-/* On each unit of pressure, of soil that may bear more in some cases. */
-static double asks_for(const kent_model *m, kent_case_kind kind)
+/* On each unit of pressure: in full, or of soil that may bear more in some cases. */
+static double asks_for(const kent_model *m, kent_case_kind kind, bool in_full)
 {
-    return kent_press_factor(m, kind) / m->loads.bearing_increase[kind];
+    return kent_press_factor(m, kind) /
+           (in_full ? 1.0 : m->loads.bearing_increase[kind]);
 }
 
 /* Keeps the one that asks for more: with factors of their own the higher pressure need
  * not be it. */
 void kent_press_take(const kent_model *m, kent_press *most, kent_press p)
 {
-    const double asks = asks_for(m, p.kind) * p.pressure;
-    const double asked = asks_for(m, most->kind) * most->pressure;
+    const double asks = asks_for(m, p.kind, most->in_full) * p.pressure;
+    const double asked = asks_for(m, most->kind, most->in_full) * most->pressure;
 
+    p.in_full = most->in_full;
     if (isnan(p.pressure)) return; /* there is no such case */
     if (isnan(most->pressure) || asks > asked + SAME * fabs(asked)) *most = p;
 }
@@ -109,23 +111,23 @@ static void press_take_marches(const kent_recorder *r, size_t fitting, size_t po
 }
 
 kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
-                           size_t fitting, size_t port, bool whole)
+                           size_t fitting, size_t port, bool whole, bool in_full)
 {
     const kent_march none = {-1, -1};
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[fitting];
     const kent_port *leg = &m->ports[f->port_first + port];
-    kent_press most = {KENT_CASE_TEST, false, kent_press_of_test(m, test, f), NAN,
-                       none};
+    kent_press most = {KENT_CASE_TEST, false,  kent_press_of_test(m, test, f), NAN,
+                       none,           in_full};
 
-    kent_press_take(
-        m, &most,
-        (kent_press){KENT_CASE_STATIC, false, kent_press_static(m, f), NAN, none});
+    kent_press_take(m, &most,
+                    (kent_press){KENT_CASE_STATIC, false, kent_press_static(m, f), NAN,
+                                 none, false});
     kent_press_take(
         m, &most,
         (kent_press){KENT_CASE_SHUT_OFF, false,
                      kent_model_pressure(m, kent_shut_off_level(m, leg->span), f->at.z),
-                     NAN, none});
+                     NAN, none, false});
     for (size_t s = 0; s < m->state_count; s++) {
         const double head =
             kent_steady_head(m, r->steadies[s], leg->span, leg->chainage);
@@ -134,11 +136,12 @@ kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
                                      false,
                                      kent_model_pressure(m, head, f->at.z),
                                      NAN,
-                                     {-1, (int)s}});
+                                     {-1, (int)s},
+                                     false});
     }
     kent_press_take(
         m, &most,
-        (kent_press){KENT_CASE_STATIC, true, kent_press_later(m, f), NAN, none});
+        (kent_press){KENT_CASE_STATIC, true, kent_press_later(m, f), NAN, none, false});
     press_take_marches(r, fitting, port, whole, &most);
     return most;
 }

@@ -10,15 +10,17 @@ typedef struct kent_press {
     bool later;            /* the pressure expected later */
     double pressure, time; /* Pa, at the fitting's centre; s, NAN outside marches */
     kent_march march;      /* the state of a steady flow; -1, -1: none */
+    bool in_full;          /* picked by SF p alone; else over what soil may bear more */
 } kent_press;
 
-/* Of all cases, the one with the greatest SF p, over what soil may bear more in it, at
- * one port (9.4); whole: at the port
- * with the widest pipe, by the highest heads of the fitting. */
+/* Of all cases, the one with the greatest SF p at one port, in full or over what soil
+ * may bear more in it (9.4); whole: at the port with the widest pipe, by the highest
+ * heads of the fitting. */
 kent_press kent_press_most(const kent_recorder *r, const kent_site_test *test,
-                           size_t fitting, size_t port, bool whole);
+                           size_t fitting, size_t port, bool whole, bool in_full);
 
-/* Makes p the most if it asks for more, or if nothing did (pressure NAN). */
+/* Makes p the most if it asks for more, as most is picked, or if nothing did (pressure
+ * NAN). */
 void kent_press_take(const kent_model *m, kent_press *most, kent_press p);
 
 /* Pa, at the fitting's centre: under the site test (9.1), under the highest level

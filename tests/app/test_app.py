@@ -338,6 +338,22 @@ class App(unittest.TestCase):
         self.assertNotIn("\n0+583", table)
         self.assertNotIn("Listed:", self.call("run", "main.cfg", "--no-files").stdout)
 
+    def test_strict_sees_a_load_case_that_is_missing_and_not_waived(self):
+        whole = (self.dir / "main.cfg").read_text()
+        bare = re.sub(r'test_pressure = "[^"]*"; test_gauge_at = "[^"]*"; ', "", whole)
+        self.assertNotEqual(bare, whole)
+        (self.dir / "bare.cfg").write_text(bare)
+        r = self.call("run", "bare.cfg", "--strict", "--no-files")
+        self.assertEqual(r.returncode, 3)
+        self.assertIn("not complete", r.stderr)
+        self.assertIn('waived = ( ( "test"', r.stdout)
+        told = bare.replace("loads = {", 'loads = { waived = ( ( "test", "laid in 1961" ) );')
+        self.assertNotEqual(told, bare)
+        (self.dir / "told.cfg").write_text(told)
+        r = self.call("run", "told.cfg", "--strict", "--no-files")
+        self.assertEqual(r.returncode, 0)
+        self.assertIn("laid in 1961", r.stdout)
+
     def test_strict_is_status_3_and_the_results_are_there(self):
         self.assertEqual(self.call("run", "main.cfg", "--strict").returncode, 0)
         (self.dir / "peat.cfg").write_text(PEAT)

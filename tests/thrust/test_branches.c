@@ -117,6 +117,25 @@ static void an_extended_branch_is_pressed_by_the_test(void **state)
     kent_net_clear(&n);
 }
 
+/* Where soil may bear three times as much under test, still water sizes a face and the
+ * test what is no soil: both are there. */
+static void an_extended_branch_is_pressed_by_both(void **state)
+{
+    (void)state;
+    kent_build b = a_main();
+    (void)branch(&b, "T", UP, KENT_BRANCH_VALVE, KENT_FLANGED);
+    b.model->loads.test_pressure = 15e5;
+    b.model->loads.test_gauge = kent_model_point_index(b.model, "T");
+    b.model->loads.bearing_increase[KENT_CASE_TEST] = 3.0;
+    kent_net n = finished(b);
+    const kent_load_case *c = kent_net_case(&n, "T", "branch extended");
+    assert_int_equal(c[0].kind, KENT_CASE_STATIC);
+    assert_int_equal(c[1].kind, KENT_CASE_TEST);
+    assert_string_equal(c[1].name, "branch extended");
+    assert_close(c[1].worst[KENT_RESULTANT].pressure, 15e5, 1e-12);
+    kent_net_clear(&n);
+}
+
 /* And by a surge: 130 m of head, 120 m above T. */
 static void an_extended_branch_is_pressed_by_a_peak(void **state)
 {
@@ -702,6 +721,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_blank_pushes_only_once_it_is_extended),
         cmocka_unit_test(an_extended_branch_is_pressed_by_the_test),
+        cmocka_unit_test(an_extended_branch_is_pressed_by_both),
         cmocka_unit_test(an_extended_branch_is_pressed_by_a_peak),
         cmocka_unit_test(a_cap_that_slips_leaves_the_tee_pushed),
         cmocka_unit_test(the_tap_nozzle_of_munson),

@@ -242,9 +242,17 @@ static void a_cross_in_a_group_is_shut_too(void **state)
 
 /* ---- what presses ---------------------------------------------------------------- */
 
-/* Of test and surge what asks for more with its factor: 15 bar x 1.0 against 12.75 bar
- * x 1.5, and with soil that may bear half as much again in exceptional cases the test.
+/* The second of a fitting's cases of a name: the same, by what asks for most in full.
  */
+static const kent_load_case *second_of(const kent_net *n, const char *id,
+                                       const char *name)
+{
+    return kent_net_case(n, id, name) + 1;
+}
+
+/* Of test and surge what asks for more with its factor: 15 bar x 1.0 against 12.75 bar
+ * x 1.5, and with soil that may bear half as much again in occasional cases the test;
+ * beside it the surge, for what is no soil: joints, and a weight. */
 static void what_presses_asks_for_most(void **state)
 {
     (void)state;
@@ -273,6 +281,17 @@ static void what_presses_asks_for_most(void **state)
         if (!more) {
             assert_true(to->worst[KENT_RESULTANT].time == 0.5);
             assert_true(from->worst[KENT_RESULTANT].time == 0.5);
+        }
+        assert_int_equal(cases_of(&n, "X", "closed to N"), more ? 2 : 1);
+        assert_int_equal(cases_of(&n, "X", "closed from R"), more ? 2 : 1);
+        static const char *const NAMES[] = {"closed to N", "closed from R"};
+        for (int i = 0; i < 2 && more; i++) {
+            const kent_load_case *full = second_of(&n, "X", NAMES[i]);
+            assert_string_equal(full->name, NAMES[i]);
+            assert_int_equal(full->kind, KENT_CASE_OCCASIONAL);
+            assert_true(full->increase == 1.5);
+            assert_close(full->worst[KENT_RESULTANT].pressure, RHO * G * 130.0, 1e-12);
+            assert_true(full->worst[KENT_RESULTANT].time == 0.5);
         }
         assert_true(kent_net_case(&n, "X", "surge")->increase == (more ? 1.5 : 1.0));
         kent_net_clear(&n);
