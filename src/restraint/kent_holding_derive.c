@@ -49,11 +49,18 @@ static bool derivation_has(const kent_derivation *d, kent_vec3 thrust)
            fabs(y->value - thrust.y) <= near && fabs(z->value - thrust.z) <= near;
 }
 
+/* Of a load, what the block takes where restrained joints take the rest. */
+static double share_of(const kent_holding *h, kent_sense sense)
+{
+    return sense != KENT_RESULTANT && h->block_share < 1.0 ? h->block_share : 1.0;
+}
+
 /* The load with its factor, the block's share of it, and what soil may bear more. */
 static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_case *c)
 {
     kent_derivation *d = &h->derivation;
-    const bool shared = sense != KENT_RESULTANT && h->block_share < 1.0;
+    const double share = share_of(h, sense);
+    const bool shared = share < 1.0;
     const bool more =
         c->increase != 1.0 && (sense == KENT_SIDEWAYS || sense == KENT_DOWNWARD);
     const double load = kent_holding_load(c, sense);
@@ -69,8 +76,7 @@ static void derive_factored(kent_holding *h, kent_sense sense, const kent_load_c
     }
     (void)snprintf(formula, sizeof formula, "%s%s%s", shared ? "bs*" : "",
                    SENSES[sense].formula_factored, more ? "/k" : "");
-    kent_derivation_work(d, SENSES[sense].factored,
-                         (shared ? h->block_share : 1.0) * load, KENT_FORCE, formula,
+    kent_derivation_work(d, SENSES[sense].factored, share * load, KENT_FORCE, formula,
                          shared ? "21.10"
                          : more ? "9.18"
                                 : "10.11",
@@ -105,7 +111,8 @@ static void derive_load(const kent_holding_work *w, kent_holding *h, kent_sense 
     if (sense != h->sense || h->runner_up < 0) return;
     (void)snprintf(says, sizeof says, "the next case, '%s', asks for less",
                    w->loads->cases[h->runner_up].title.s);
-    kent_derivation_put(d, "Fnext", h->runner_up_load, KENT_FORCE, KENT_COMPUTED, says);
+    kent_derivation_put(d, "Fnext", share_of(h, sense) * h->runner_up_load, KENT_FORCE,
+                        KENT_COMPUTED, says);
 }
 
 static void derive_peak(const kent_holding_work *w, kent_holding *h)

@@ -194,6 +194,24 @@ static void block_and_joints_are_each_for_their_part(void **state)
     }
 }
 
+/* The next case's load stands beside a share, so it is its share. */
+static void of_the_next_case_too_the_block_takes_its_part(void **state)
+{
+    (void)state;
+    static const kent_hand_case two[] = {{"test", KENT_CASE_TEST, 1.5, 0.2e6},
+                                         {"rest", KENT_CASE_STATIC, 1.5, 0.15e6}};
+    kent_build b = main_with(KENT_BLOCKS_ALLOWED, KENT_BLOCK_AND_JOINTS, 0.4, false);
+    b.model->pipes[0].laying_length = 100.0; /* so that the block uses most */
+    kent_build_derive(&b);
+    kent_restraints *r = kent_hand_size(&b, two, 2);
+    const kent_line *block = kent_derivation_find(&at_e(&b, r)->derivation, "Fh");
+    const kent_line *next = kent_derivation_find(&at_e(&b, r)->derivation, "Fnext");
+
+    assert_true(block && next);
+    assert_close(next->value, 0.75 * block->value, 1e-9);
+    finish(&b, r);
+}
+
 static void without_a_share_or_with_one_part_missing_nothing_is_held(void **state)
 {
     (void)state;
@@ -276,6 +294,7 @@ int main(void)
         cmocka_unit_test(rules_that_want_both_have_each_for_all_of_the_thrust),
         cmocka_unit_test(against_an_upward_thrust_blocks_may_be_forbidden_alone),
         cmocka_unit_test(block_and_joints_are_each_for_their_part),
+        cmocka_unit_test(of_the_next_case_too_the_block_takes_its_part),
         cmocka_unit_test(without_a_share_or_with_one_part_missing_nothing_is_held),
         cmocka_unit_test(a_face_is_taller_than_its_pipe_by_what_the_rules_ask),
         cmocka_unit_test(a_large_main_wants_its_own_least_cover),
