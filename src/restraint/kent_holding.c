@@ -1,8 +1,8 @@
 #include "kent_concrete_internal.h"
 #include "kent_stability_internal.h"
 
-/* Loads nearer than this, relative, are a tie: the case listed first governs. The steady
- * state and the start of a march differ in their last digits. */
+/* Loads nearer than this, relative, are a tie: the case listed first governs. The
+ * steady state and the start of a march differ in their last digits. */
 static const double TIE = 1e-9;
 
 double kent_holding_part(const kent_load_case *c, kent_sense sense)
