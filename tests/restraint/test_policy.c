@@ -141,7 +141,7 @@ static void rules_that_want_both_have_each_for_all_of_the_thrust(void **state)
     }
 }
 
-/* T-55: upright bends. */
+/* Upright bends. */
 static void against_an_upward_thrust_blocks_may_be_forbidden_alone(void **state)
 {
     (void)state;
@@ -267,7 +267,7 @@ static void beyond_the_rules_largest_thrust_the_concrete_is_to_be_designed(void 
     }
 }
 
-/* T-34: 0.62 m and 0.3 m more, in steps of 0.05 m; beyond 2/3 of 1.81 m nothing fits.
+/* 0.62 m and 0.3 m more, in steps of 0.05 m; beyond 2/3 of 1.81 m nothing fits.
  */
 static void a_face_is_taller_than_its_pipe_by_what_the_rules_ask(void **state)
 {

@@ -186,7 +186,7 @@ static void another_main_through_the_ground_is_named(void **state)
     }
 }
 
-/* T-26: a bend with restrained joints, turning left at B, is pushed to the right; a
+/* A bend with restrained joints, turning left at B, is pushed to the right; a
  * main on that side lies in the ground that its trench leans on, one on the left does
  * not. */
 static void a_main_beside_a_restrained_bend_is_named(void **state)
