@@ -159,6 +159,11 @@ bool kent_as_built_judge(const kent_holding_work *w, const kent_holding *h,
     }
     judge_size(w, h, block, notes);
     const bool leans = !faced || judge_ground(w, h, block, notes);
+    if (kent_holding_above_ground(w) || kent_holding_in_casing(w)) {
+        kent_notes_add(notes, "it stands %s, where a block has no ground to lean on",
+                       kent_holding_in_casing(w) ? "in a casing" : "above ground");
+        return false;
+    }
     if (w->soil && !kent_soil_counts(w->soil)) {
         kent_notes_add(notes,
                        "the soil here, '%s', gives no restraint: what leans on it "

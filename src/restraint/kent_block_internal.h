@@ -52,6 +52,7 @@ typedef enum kent_fault {
                              largest that may be sized */
     KENT_FAULT_SOIL_UNSTATED,
     KENT_FAULT_ABOVE_GROUND, /* no soil is there to bear */
+    KENT_FAULT_CASING,       /* nor is there in a casing */
     KENT_FAULT_SLOPE, /* the ground before the face falls more than the rules allow */
     KENT_FAULT_FILL,  /* fill before the face that is not stated, or bears nothing */
     KENT_FAULT_OTHER_WAY, /* a push that its face does not bear */

@@ -120,12 +120,20 @@ bool kent_holding_above_ground(const kent_holding_work *w)
     return above;
 }
 
+bool kent_holding_in_casing(const kent_holding_work *w)
+{
+    const int zone = w->fitting->zone;
+
+    return zone >= 0 && w->m->ground_zones[zone].casing;
+}
+
 static kent_fault holding_soil_fault(const kent_holding_work *w, const kent_holding *h)
 {
     const bool leans =
         w->demand.load[KENT_SIDEWAYS] > 0.0 || w->demand.load[KENT_DOWNWARD] > 0.0;
 
     if (kent_holding_above_ground(w)) return KENT_FAULT_ABOVE_GROUND;
+    if (kent_holding_in_casing(w)) return KENT_FAULT_CASING;
     if (!w->soil) return leans ? KENT_FAULT_SOIL_UNSTATED : KENT_FAULT_NONE;
     if (!kent_soil_counts(w->soil)) return KENT_FAULT_SOIL;
     return kent_holding_ground_fault(w, h);
@@ -205,7 +213,7 @@ static void holding_curve(kent_holding_work *w, kent_holding *h)
         w->demand.load[KENT_UPWARD] <= 0.0 && w->demand.load[KENT_DOWNWARD] <= 0.0;
 
     w->side_load = kent_curve_side_load(sideways, f->angle, f->curve_radius);
-    if (kent_holding_above_ground(w)) return;
+    if (kent_holding_above_ground(w) || kent_holding_in_casing(w)) return;
     if (!level || !(sideways > 0.0) || !kent_soil_counts(w->soil)) return;
     w->fault = kent_holding_ground_fault(w, h);
     if (w->fault != KENT_FAULT_NONE) return;

@@ -54,6 +54,9 @@ double kent_holding_load(const kent_load_case *c, kent_sense sense);
 /* Whether all its pipes lie above ground, on supports. */
 bool kent_holding_above_ground(const kent_holding_work *w);
 
+/* Whether it stands in a casing, which keeps the ground off it. */
+bool kent_holding_in_casing(const kent_holding_work *w);
+
 void kent_holding_find(kent_holding_work *w, kent_holding *h); /* what governs */
 
 /* Whether two cases push one way, sideways: one face bears both. */

@@ -316,6 +316,11 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                       "flanges, welds or restrained joints into pipe that is held",
                       kent_said_of(KENT_FORCE, units, h->design_thrust).s);
         return;
+    case KENT_FAULT_CASING:
+        kent_text_add(t,
+                      "no block: this stands in a casing, which keeps the ground off "
+                      "it; end the casing before it, or ");
+        break;
     case KENT_FAULT_COVER_UNSTATED:
         kent_text_add(t, "no block: the cover is not stated; give ground.cover, or "
                          "cover where this stands");
@@ -472,6 +477,9 @@ static void refuse_curve(const kent_holding_work *w, const kent_holding *h,
     if (kent_holding_above_ground(w)) {
         kent_text_add(t, "and above ground no soil is beside it: guide it by a "
                          "structure made for that");
+    } else if (kent_holding_in_casing(w)) {
+        kent_text_add(t, "and in a casing no soil is beside it: end the casing before "
+                         "it, or guide it there by a structure made for that");
     } else if (!level) {
         kent_text_add(t,
                       "and up or down too, which is not judged: weigh it against the "

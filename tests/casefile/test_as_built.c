@@ -286,6 +286,21 @@ static void ground_that_may_not_be_leant_on_holds_nothing(void **state)
     assert_true(says(b, "'a ditch' stands in the wedge"));
     free(ditch);
     let_go(&w);
+
+    char *cased = main_with("angle = \"45 deg\";", "allowable_bearing = \"90 kPa\";",
+                            "ground_zones = ( { pipe = \"A\"; from = \"1+990\"; to = "
+                            "\"2+000\"; casing = true; }, { pipe = \"B\"; from = "
+                            "\"2+000\"; to = \"2+010\"; casing = true; } );\n");
+    char *built = malloc(strlen(cased) + sizeof BUILT);
+    assert_non_null(built);
+    (void)snprintf(built, strlen(cased) + sizeof BUILT, "%s%s", cased, BUILT);
+    w = work_out(built);
+    b = &holding(&w, "F")->as_built;
+    assert_true(b->falls_short);
+    assert_true(says(b, "it stands in a casing"));
+    free(built);
+    free(cased);
+    let_go(&w);
 }
 
 /* ---- rules that are broken ------------------------------------------------------- */

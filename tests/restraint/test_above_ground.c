@@ -1,4 +1,4 @@
-/* Fittings on supports: no soil bears there. */
+/* Fittings on supports and in casings: no soil bears there. */
 #include "kent_hand.h"
 
 #include <math.h>
@@ -52,11 +52,62 @@ static void nor_does_any_hold_a_curve(void **state)
     }
 }
 
+/* A casing along part of the pipe, m from R. */
+static void encase(kent_build *b, double from, double to)
+{
+    b->model->ground_zones = kent_alloc(1, sizeof *b->model->ground_zones);
+    assert_non_null(b->model->ground_zones);
+    b->model->ground_zones[0] = (kent_ground_zone){.from = from,
+                                                   .to = to,
+                                                   .soil = -1,
+                                                   .cover = NAN,
+                                                   .water_table = NAN,
+                                                   .trench = -1,
+                                                   .backfill = -1,
+                                                   .casing = true};
+    b->model->ground_zone_count = 1;
+}
+
+static void nor_does_a_block_stand_in_a_casing(void **state)
+{
+    (void)state;
+    for (int past = 0; past < 2; past++) {
+        kent_build b = turned(NAN);
+        encase(&b, 490.0, past ? 510.0 : 495.0);
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, &AT_REST, 1);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_int_equal(h->held, !past);
+        assert_int_equal(h->block.type == KENT_BLOCK_NONE, past);
+        if (past) kent_hand_expect(h, "this stands in a casing");
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+}
+
+static void a_curve_in_a_casing_leans_on_nothing(void **state)
+{
+    (void)state;
+    for (int cased = 0; cased < 2; cased++) {
+        kent_build b = turned(200.0);
+        if (cased) encase(&b, 300.0, 620.0); /* the whole arc */
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, &AT_REST, 1);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "B")];
+        assert_int_equal(h->held, !cased);
+        if (cased) kent_hand_expect(h, "in a casing no soil is beside it");
+        kent_restraints_free(r);
+        kent_build_clear(&b);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(no_block_stands_where_no_soil_bears),
         cmocka_unit_test(nor_does_any_hold_a_curve),
+        cmocka_unit_test(nor_does_a_block_stand_in_a_casing),
+        cmocka_unit_test(a_curve_in_a_casing_leans_on_nothing),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }

@@ -74,7 +74,7 @@ static void a_cross_is_held_on_every_side(void **state)
     kent_net_clear(&n);
 }
 
-/* As closes says, none: nothing pushes, and that this stands on that is said. */
+/* As can_close says, none: nothing pushes, and that this stands on that is said. */
 static void a_balanced_cross_is_told(void **state)
 {
     (void)state;
