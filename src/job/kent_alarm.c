@@ -562,6 +562,21 @@ static void inertia_of_another_notation(const watch *w)
     kent_text_clear(&words);
 }
 
+/* Pa: water between 0 and 100 degC lies well within (theory chapter 1). */
+static const double SOFTEST_WATER = 1.8e9, HARDEST_WATER = 2.5e9;
+
+static void modulus_of_no_water(const watch *w)
+{
+    const double k = w->m->water.bulk_modulus;
+
+    if (k >= SOFTEST_WATER && k <= HARDEST_WATER) return;
+    kent_notes_add(
+        w->cautions,
+        "bulk_modulus of the water is %.2f GPa (%.0f ksi): water has 2.0 to "
+        "2.4 GPa (285 to 340 ksi); was it turned from one unit into another?",
+        k / 1e9, k / 6.894757e6);
+}
+
 /* ---- the list -------------------------------------------------------------------- */
 
 static const struct {
@@ -585,6 +600,7 @@ static const struct {
     {stations_off_the_ground, true},
     {zones_at_two_places, true},
     {much_free_gas, true},
+    {modulus_of_no_water, true},
     {unlikely_cover, true},
     {inertia_of_another_notation, true},
     {bearing_beyond_the_ground, false},

@@ -1,5 +1,6 @@
 /* What was built, told: the factor reached in each load case beside the one asked,
  * never a verdict. */
+#include "kent_imprint.h"
 #include "kent_json.h"
 #include "kent_page.h"
 #include "kent_shown.h"
@@ -202,6 +203,7 @@ kent_status kent_report_built(const kent_results *r, const int *fittings, size_t
     kent_text out = {0}, words = {0};
     size_t short_of = 0, stated = 0;
     kent_text_add(&out, "%s\nAs built\n", r->model->title);
+    kent_imprint_top(r->model, limit, &out);
     for (size_t i = 0; i < count; i++) {
         const built_row row = row_of(r, o->units, fittings[i]);
         print_fitting(&row, limit, &out);
@@ -221,7 +223,7 @@ kent_status kent_report_built(const kent_results *r, const int *fittings, size_t
         "the dimensions built, over the unfactored load. Nothing is interpolated, and "
         "what was not measured is not told.");
     kent_text_add(&out, "\n");
-    kent_table_paragraph(&out, limit, "", KENT_PAGE_JUDGE);
+    kent_imprint_end(r->model, limit, &out);
     out.failed = out.failed || words.failed;
     const kent_status status = kent_sink_flush(sink, &out);
     kent_text_clear(&words);

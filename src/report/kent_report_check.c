@@ -1,4 +1,5 @@
 #include "kent_alarm.h"
+#include "kent_imprint.h"
 #include "kent_sink.h"
 #include "kent_view.h"
 
@@ -10,25 +11,20 @@
 static void say_project(const kent_view *v)
 {
     const kent_project *p = &v->model->project;
-    const struct {
-        const char *word, *value;
-    } rows[] = {{"for", p->utility},
-                {"project", p->number},
-                {"drawing", p->drawing},
-                {"revision", p->revision},
-                {"designed by", p->designer},
-                {"checked by", p->checker},
-                {"date", p->date},
-                {"held to", p->codes}};
-    kent_text words = {0};
-    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
-        if (rows[i].value[0] == '\0') continue;
-        kent_text_add(&words, "%s%s %s",
-                      words.length > 0 ? ", " : "For the sheets: ", rows[i].word,
-                      rows[i].value);
+    kent_text words = {0}, told = {0};
+
+    kent_imprint_words(p, &told);
+    if (p->codes[0] != '\0') {
+        kent_text_add(&told, "%snamed as prevailing, not checked: %s",
+                      told.length > 0 ? "; " : "", p->codes);
     }
-    if (words.length > 0 || words.failed) kent_view_say(v, "", &words);
+    if (told.length > 0 || told.failed) {
+        kent_text_add(&words, "For the sheets: %s", kent_text_of(&told));
+        words.failed = words.failed || told.failed;
+        kent_view_say(v, "", &words);
+    }
     kent_text_clear(&words);
+    kent_text_clear(&told);
 }
 
 /* ---- the water ------------------------------------------------------------------- */
@@ -51,9 +47,17 @@ static void say_head(const kent_view *v)
             &words, " at %s",
             kent_shown_with_unit(KENT_TEMPERATURE, v->units, w->temperature).text);
     }
-    kent_text_add(&words, ": density %s, sound %s, viscosity %s, vapour pressure %s. ",
+    kent_text_add(&words, ": density %s, sound %s, ",
                   kent_shown_with_unit(KENT_DENSITY, v->units, w->density).text,
-                  kent_shown_with_unit(KENT_SPEED, v->units, w->sound_speed).text,
+                  kent_shown_with_unit(KENT_SPEED, v->units, w->sound_speed).text);
+    /* In both systems: a slip between them goes unseen in one. */
+    kent_text_add(&words, "bulk modulus %s (%s), ",
+                  kent_shown_with_unit(KENT_MODULUS, v->units, w->bulk_modulus).text,
+                  kent_shown_with_unit(KENT_MODULUS,
+                                       v->units == KENT_SI ? KENT_US : KENT_SI,
+                                       w->bulk_modulus)
+                      .text);
+    kent_text_add(&words, "viscosity %s, vapour pressure %s. ",
                   kent_shown_with_unit(KENT_VISCOSITY, v->units, w->viscosity).text,
                   kent_shown_with_unit(KENT_STRESS, v->units, w->vapour_pressure).text);
     if (m->gas_content > 0.0) {

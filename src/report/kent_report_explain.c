@@ -1,3 +1,4 @@
+#include "kent_imprint.h"
 #include "kent_pressures.h"
 #include "kent_shown.h"
 #include "kent_sink.h"
@@ -40,6 +41,7 @@ static void print_title(const kent_sheet *s)
     if (s->model->title[0] != '\0') {
         kent_table_paragraph(s->out, s->limit, "", s->model->title);
     }
+    kent_imprint_top(s->model, s->limit, s->out);
     kent_text_add(s->out, "\n");
     s->out->failed = s->out->failed || words.failed;
     kent_text_clear(&words);
@@ -542,6 +544,8 @@ kent_status kent_report_explain(const kent_results *r, int fitting,
     print_pulls(&s);
     print_cautions(&s);
     print_needs(&s);
+    kent_text_add(&out, "\n");
+    kent_imprint_end(s.model, s.limit, &out);
     const kent_status status = kent_sink_flush(sink, &out);
     kent_text_clear(&out);
     return status;

@@ -28,6 +28,23 @@ static json_t *water_of(const kent_water *water)
     return kent_object_done(o);
 }
 
+static json_t *project_of(const kent_project *p)
+{
+    const struct {
+        const char *key, *value;
+    } rows[] = {{"number", p->number},     {"drawing", p->drawing},
+                {"revision", p->revision}, {"designer", p->designer},
+                {"checker", p->checker},   {"utility", p->utility},
+                {"date", p->date},         {"codes", p->codes}};
+    kent_object o = kent_object_new();
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        const char *value = rows[i].value;
+        kent_object_set(&o, rows[i].key,
+                        value[0] != '\0' ? kent_json_words(value) : json_null());
+    }
+    return kent_object_done(o);
+}
+
 static void put_head(kent_writer *w)
 {
     char checksum[20];
@@ -37,6 +54,8 @@ static void put_head(kent_writer *w)
     kent_json_put(w, kent_json_words(KENT_VERSION));
     kent_json_put_text(w, ",\n\"title\": ");
     kent_json_put(w, kent_json_words(w->model->title));
+    kent_json_put_text(w, ",\n\"project\": ");
+    kent_json_put(w, project_of(&w->model->project));
     kent_json_put_text(w, ",\n\"case_checksum\": ");
     kent_json_put(w, kent_json_words(checksum));
     kent_json_put_text(w, ",\n\"water\": ");

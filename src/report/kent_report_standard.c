@@ -1,5 +1,6 @@
 /* A standard table on paper: what it stands on, thrusts, a table for each soil, and why
  * some cells are empty. */
+#include "kent_imprint.h"
 #include "kent_page.h"
 #include "kent_shown.h"
 #include "kent_sink.h"
@@ -374,7 +375,6 @@ static void print_soil(sheet *s, size_t soil)
 static void print_head(sheet *s)
 {
     const kent_model *m = s->r->cells[0].model;
-    const kent_project *p = &m->project;
     kent_notes notes = {0};
     kent_text words = {0};
     kent_text_add(s->out, "%s\nStandard table: %s\n", m->title,
@@ -383,19 +383,7 @@ static void print_head(sheet *s)
                       ? "restrained joints"
                       : "thrust blocks, and restrained "
                         "joints in their place");
-    const struct {
-        const char *word, *value;
-    } PROJECT[] = {{"project", p->number},
-                   {"drawing", p->drawing},
-                   {"revision", p->revision},
-                   {"designed by", p->designer},
-                   {"checked by", p->checker},
-                   {"for", p->utility},
-                   {"of", p->date}};
-    for (size_t i = 0; i < sizeof PROJECT / sizeof PROJECT[0]; i++) {
-        if (PROJECT[i].value[0] == '\0') continue;
-        kent_text_add(s->out, "%s %s\n", PROJECT[i].word, PROJECT[i].value);
-    }
+    kent_imprint_top(m, s->limit, s->out);
     kent_text_add(s->out, "\nIt stands on\n");
     kent_standard_assumptions(s->r, s->units, &notes);
     for (size_t i = 0; i < notes.count; i++) {
@@ -429,8 +417,6 @@ static void print_key(sheet *s)
 
 static void print_end(sheet *s)
 {
-    const kent_model *m = s->r->cells[0].model;
-    kent_text words = {0};
     if (s->t->what != KENT_STANDARD_BLOCKS) {
         kent_table_paragraph(s->out, s->limit, "",
                              "Joints: restrained length on each leg of a bend, behind "
@@ -438,14 +424,7 @@ static void print_end(sheet *s)
                              "of a valve.");
     }
     kent_text_add(s->out, "\n");
-    kent_table_paragraph(s->out, s->limit, "", KENT_PAGE_JUDGE);
-    kent_text_add(&words, "kentledge %s", KENT_VERSION);
-    if (m->file_count > 0) {
-        kent_text_add(&words, " · %s · checksum %016llx", m->files[0], m->checksum);
-    }
-    kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
-    s->failed = s->failed || words.failed;
-    kent_text_clear(&words);
+    kent_imprint_end(s->r->cells[0].model, s->limit, s->out);
 }
 
 kent_status kent_report_standard(const kent_standard_result *r,

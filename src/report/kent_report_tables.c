@@ -1,3 +1,4 @@
+#include "kent_imprint.h"
 #include "kent_page.h"
 #include "kent_pressures.h"
 #include "kent_said.h"
@@ -58,6 +59,7 @@ static void print_title(kent_page *page)
     kent_text facts = {0};
     kent_table_paragraph(page->out, page->limit, "",
                          m->title[0] != '\0' ? m->title : "(untitled)");
+    kent_imprint_top(m, page->limit, page->out);
     kent_text_add(&facts, "%zu fitting%s · %zu scenario%s · gauge pressure",
                   m->fitting_count, plural(m->fitting_count),
                   page->results->scenario_count, plural(page->results->scenario_count));
@@ -533,25 +535,8 @@ static void print_rest(kent_page *page)
 
 static void print_end(kent_page *page)
 {
-    const kent_model *m = page->model;
-    kent_text words = {0};
     kent_text_add(page->out, "\n");
-    kent_table_paragraph(page->out, page->limit, "", KENT_PAGE_JUDGE);
-    if (m->project.codes[0] != '\0') {
-        kent_text_add(&words,
-                      "The case names as prevailing: %s. Nothing here says that any of "
-                      "them is met.",
-                      m->project.codes);
-        kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
-        kent_text_reset(&words);
-    }
-    kent_text_add(&words, "kentledge %s", KENT_VERSION);
-    if (m->file_count > 0) {
-        kent_text_add(&words, " · %s · checksum %016llx", m->files[0], m->checksum);
-    }
-    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
-    page->out->failed = page->out->failed || words.failed;
-    kent_text_clear(&words);
+    kent_imprint_end(page->model, page->limit, page->out);
 }
 
 kent_status kent_report_tables(const kent_results *r, const kent_report_options *o,

@@ -560,6 +560,27 @@ static void many_of_a_kind_are_one_alarm(void **state)
     kent_build_clear(&b);
 }
 
+/* 300 000 psi are 2.07 GPa; a published answer turns them into 6.07 (from memory). */
+static void a_modulus_that_no_water_has_is_seen(void **state)
+{
+    (void)state;
+    static const double QUIET[] = {1.8e9, 2.07e9, 2.5e9}, LOUD[] = {1.79e9, 6.07e9};
+    for (size_t i = 0; i < 3; i++) {
+        kent_build b = quiet_main();
+        kent_build_derive(&b);
+        b.model->water.bulk_modulus = QUIET[i];
+        assert_quiet(&b);
+        kent_build_clear(&b);
+    }
+    for (size_t i = 0; i < 2; i++) {
+        kent_build b = quiet_main();
+        kent_build_derive(&b);
+        b.model->water.bulk_modulus = LOUD[i];
+        assert_raised(&b, i == 0 ? "1.79 GPa (260 ksi)" : "6.07 GPa (880 ksi)");
+        kent_build_clear(&b);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -583,6 +604,7 @@ int main(void)
         cmocka_unit_test(a_zone_whose_stations_are_counted_twice_is_seen),
         cmocka_unit_test(a_test_by_rule_below_the_still_water_of_another_main_is_seen),
         cmocka_unit_test(more_than_a_hundredth_of_free_gas_is_seen),
+        cmocka_unit_test(a_modulus_that_no_water_has_is_seen),
         cmocka_unit_test(a_moment_of_inertia_that_may_be_gd2_is_seen),
         cmocka_unit_test(a_cover_of_decimetres_or_of_ten_metres_is_seen),
         cmocka_unit_test(a_bearing_beyond_the_ground_s_own_is_seen),

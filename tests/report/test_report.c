@@ -95,6 +95,41 @@ static void the_tables_say_what_an_engineer_must_know(void **state)
 }
 
 /* A rating is a column where a pipe has it and something is held against it. */
+/* Who it is for, who made it, who judges and where it is signed, on every sheet. */
+static void sheets_say_whose_they_are(void **state)
+{
+    (void)state;
+    for (int named = 0; named < 2; named++) {
+        kent_mixed mixed = kent_mixed_new(false);
+        const kent_report_options o = {.units = KENT_SI};
+        const kent_results *r = mixed.results;
+        kent_text tables = {0}, sheet = {0};
+        if (named) {
+            kent_project *p = &mixed.build.model->project;
+            (void)snprintf(p->number, sizeof p->number, "24-117");
+            (void)snprintf(p->checker, sizeof p->checker, "M. Roe");
+            (void)snprintf(p->codes, sizeof p->codes, "EN 805:2025");
+        }
+        assert_int_equal(kent_report_tables(r, &o, kent_mixed_sink(&tables)), KENT_OK);
+        assert_int_equal(kent_report_explain(r, 0, &o, kent_mixed_sink(&sheet)),
+                         KENT_OK);
+        const char *texts[] = {kent_text_of(&tables), kent_text_of(&sheet)};
+        for (size_t i = 0; i < 2; i++) {
+            static const char WHOSE[] = "\nproject 24-117, checked by M. Roe\n";
+            assert_int_equal(strstr(texts[i], WHOSE) != NULL, named);
+            assert_int_equal(strstr(texts[i], "   Seal ____") != NULL, named);
+            assert_int_equal(strstr(texts[i], "as prevailing: EN 805:2025") != NULL,
+                             named);
+            assert_contains(texts[i], "for competent, licensed engineers");
+        }
+        assert_narrow(texts[0]);
+        assert_narrow(texts[1]);
+        kent_text_clear(&tables);
+        kent_text_clear(&sheet);
+        kent_mixed_clear(&mixed);
+    }
+}
+
 static void ratings_have_columns_where_something_is_held_against_them(void **state)
 {
     (void)state;
@@ -193,6 +228,8 @@ static const char *const KEYS[] = {
     "program",
     "version",
     "title",
+    "project.number",
+    "project.codes",
     "case_checksum",
     "water.density_kgm3",
     "water.bulk_modulus_Pa",
@@ -787,6 +824,7 @@ int main(void)
         cmocka_unit_test(nothing_printed_is_wider_than_a_hundred_columns),
         cmocka_unit_test(wide_cuts_nothing_short),
         cmocka_unit_test(the_tables_say_what_an_engineer_must_know),
+        cmocka_unit_test(sheets_say_whose_they_are),
         cmocka_unit_test(ratings_have_columns_where_something_is_held_against_them),
         cmocka_unit_test(what_cannot_be_held_stands_first),
         cmocka_unit_test(every_line_of_a_hand_calculation_can_be_worked_out_again),

@@ -184,6 +184,22 @@ static void the_sheets_numbers_and_names_are_said(void **state)
     (void)snprintf(b.model->project.drawing, sizeof b.model->project.drawing, "C-201");
     (void)snprintf(b.model->project.checker, sizeof b.model->project.checker, "M. Roe");
     assert_says(&b, KENT_SI, "For the sheets: drawing C-201, checked by M. Roe\n");
+    (void)snprintf(b.model->project.codes, sizeof b.model->project.codes,
+                   "EN 805:2025");
+    assert_says(&b, KENT_SI,
+                "checked by M. Roe; named as prevailing, not checked: EN 805:2025\n");
+    kent_build_clear(&b);
+}
+
+/* 2.147 GPa at 15 degC (IAPWS); 1 GPa is 145.04 ksi. */
+static void the_modulus_of_water_is_said_in_both_systems(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    kent_build_derive(&b);
+    b.model->water.bulk_modulus = 2.147e9;
+    assert_says(&b, KENT_SI, "bulk modulus 2.1 GPa (311 ksi)");
+    assert_says(&b, KENT_US, "bulk modulus 311 ksi (2.1 GPa)");
     kent_build_clear(&b);
 }
 
@@ -514,6 +530,7 @@ int main(void)
         cmocka_unit_test(fittings_held_as_one_are_told_with_their_members),
         cmocka_unit_test(a_value_of_the_ground_says_whose_it_is),
         cmocka_unit_test(the_sheets_numbers_and_names_are_said),
+        cmocka_unit_test(the_modulus_of_water_is_said_in_both_systems),
         cmocka_unit_test(what_was_not_stated_is_said),
         cmocka_unit_test(a_restraint_says_why),
         cmocka_unit_test(every_route_of_bearing_is_told_with_its_numbers),
