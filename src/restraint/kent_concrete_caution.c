@@ -89,11 +89,14 @@ static void caution_age(const kent_model *m, kent_restraints *r, int slowest)
     if (c->age_asked) {
         kent_text_add(&t, "the design rules ask for that");
     } else {
-        kent_text_add(&t, "at %s it wants %s by then, of %s%s at 28 days",
-                      m->fittings[slowest].id,
-                      kent_said_of(KENT_STRENGTH, m->units, c->strength_needed).s,
-                      kent_said_of(KENT_STRENGTH, m->units, c->strength).s,
-                      c->strength_assumed ? " assumed" : "");
+        kent_text_add(
+            &t,
+            "at %s it wants %s by then, of %s%s at 28 days; a stronger class, "
+            "or cement that gains strength rapidly, makes that sooner",
+            m->fittings[slowest].id,
+            kent_said_of(KENT_STRENGTH, m->units, c->strength_needed).s,
+            kent_said_of(KENT_STRENGTH, m->units, c->strength).s,
+            c->strength_assumed ? " assumed" : "");
     }
     kent_notes_add(&r->cautions, "%s", kent_text_of(&t));
     r->cautions.failed = r->cautions.failed || t.failed;

@@ -131,6 +131,26 @@ static void blocks_face_to_face_collide_share_ground_or_do_not_meet(void **state
     finish(&b, r);
 }
 
+/* One that holds from either side is as long behind the fitting as before it, and what
+ * stands there stands in its place. */
+static void a_block_that_holds_both_ways_is_there_behind_too(void **state)
+{
+    (void)state;
+    for (int pass = 0; pass < 2; pass++) {
+        kent_build b = ends_facing(-0.5, 1.0); /* G stands back to back with E */
+        b.model->notes[0].restraint =
+            pass ? (int)KENT_ANCHOR_BLOCK : (int)KENT_THRUST_BLOCK;
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = &r->fittings[kent_build_fitting_of(&b, "E")];
+        size_t count = 0;
+        assert_true(h->held && h->footprint.both_ways == (pass == 1));
+        assert_close(h->footprint.behind, pass ? h->footprint.front : 0.0, 1e-12);
+        const kent_neighbour *n = near_to(&b, r, "E", &count);
+        assert_true((n && n->how == KENT_MEETS_BODY) == (pass == 1));
+        finish(&b, r);
+    }
+}
+
 /* Side by side the wedges widen by R tan 30 degrees: at 30 degrees by R/sqrt(3). */
 static void wedges_meet_to_the_side_too(void **state)
 {
@@ -313,6 +333,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(figures_share_and_lie_apart_as_by_hand),
         cmocka_unit_test(blocks_face_to_face_collide_share_ground_or_do_not_meet),
+        cmocka_unit_test(a_block_that_holds_both_ways_is_there_behind_too),
         cmocka_unit_test(wedges_meet_to_the_side_too),
         cmocka_unit_test(another_main_through_the_ground_is_named),
         cmocka_unit_test(a_main_beside_a_restrained_bend_is_named),
