@@ -123,7 +123,8 @@ static void note_run(kent_holding_work *w, const kent_leg_work *work)
 }
 
 /* The other published form, where it asks for more; and a form that has none. */
-static void note_forms(kent_holding_work *w, const kent_leg_work *work)
+static void note_forms(kent_holding_work *w, const kent_port *p,
+                       const kent_leg_work *work)
 {
     const kent_length_form other =
         work->form == KENT_FORM_ETL ? KENT_FORM_HANDBOOK : KENT_FORM_ETL;
@@ -131,8 +132,9 @@ static void note_forms(kent_holding_work *w, const kent_leg_work *work)
         other == KENT_FORM_ETL ? "USACE ETL 1110-3-446" : "iron-pipe handbooks";
 
     if (work->by_form[other] > work->length * (1.0 + SAME_LENGTH)) {
-        kent_notes_add(&w->met, "by the form of %s the restrained length would be %s",
-                       name,
+        kent_notes_add(&w->met,
+                       "by the form of %s the restrained length towards %s would be %s",
+                       name, p->toward >= 0 ? w->m->points[p->toward].id : "its end",
                        kent_said_of(KENT_LENGTH, w->m->units, work->by_form[other]).s);
     }
     if (w->m->rules.length_form == KENT_FORM_ETL &&
@@ -279,7 +281,7 @@ kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *wor
         note_piece(w, work, &work->piece[i]);
     }
     note_run(w, work);
-    note_forms(w, work);
+    note_forms(w, p, work);
     note_reducer(w, p);
     note_passed(w, &walk);
     note_end(w, &walk, work->length, leg.factor * leg.pull);

@@ -140,6 +140,15 @@ static void caution_steep(const kent_model *m, kent_steep *s)
             kent_said_of(KENT_LENGTH, units, s->spacing).s, s->anchors,
             kent_said_of(KENT_FORCE, units, s->anchor_force).s,
             p->above_ground ? "" : "; with a water-stop across the trench at each");
+    } else if (s->hangs <= 0.0) {
+        kent_text_add(
+            &t,
+            "its joints hold, and friction holds it as long as no water "
+            "loosens the trench: put water-stops across it; without "
+            "friction it hangs on its upper end with %s factored: anchor it "
+            "there for that",
+            kent_said_of(KENT_FORCE, units, s->factor * s->along * (s->end - s->start))
+                .s);
     } else {
         kent_text_add(&t,
                       "its joints hold, so that it hangs on its upper end with %s "

@@ -135,7 +135,8 @@ static void in_clay_the_form_of_the_etl_gives_the_longer_length(void **state)
         assert_close(h->legs[0].length, etl ? other : handbook, 1e-9);
         assert_true(other > 1.05 * handbook);
         assert_true(kent_hand_says(h, "by the form of USACE ETL 1110-3-446 the "
-                                      "restrained length would be") == (etl == 0));
+                                      "restrained length towards A would be") ==
+                    (etl == 0));
         assert_non_null(kent_derivation_find(&h->derivation, etl ? "L_hb" : "L_etl"));
         assert_true(kent_hand_lines(&h->derivation, KENT_SI) > 5);
         finish(&b, r);

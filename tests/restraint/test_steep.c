@@ -148,6 +148,27 @@ static void joints_that_hold_hang_on_the_upper_end(void **state)
     done(&b, r);
 }
 
+/* Friction that water may take away is not told as if nothing hung. */
+static void what_would_hang_without_friction_is_told(void **state)
+{
+    (void)state;
+    kent_build b = falling(48.0);
+    const int soil = kent_build_soil(&b, "sand", 100e3, 19e3, 1.0);
+    b.model->soils[soil].friction_angle = 30.0 * PI / 180.0;
+    b.model->soils[soil].cohesion = 0.0;
+    b.model->soils[soil].friction_ratio = 0.7;
+    b.model->pipes[0].joint = KENT_RESTRAINED;
+    kent_restraints *r = sized(&b);
+    const kent_steep *s = &r->pulls.steeps[0];
+    char force[48];
+    (void)snprintf(force, sizeof force, "with %.1f kN factored",
+                   1.5 * s->along * hypot(120.0, 48.0) / 1000.0);
+    assert_within(s->hangs, 0.0, 0.0);
+    assert_true(strstr(s->cautions.text[0], force));
+    assert_true(strstr(s->cautions.text[0], "as long as no water loosens"));
+    done(&b, r);
+}
+
 static void a_pipe_of_unknown_mass_is_said_to_be(void **state)
 {
     (void)state;
@@ -178,6 +199,7 @@ int main(void)
         cmocka_unit_test(rules_say_from_what_slope_on),
         cmocka_unit_test(friction_is_told_beside_and_not_counted),
         cmocka_unit_test(joints_that_hold_hang_on_the_upper_end),
+        cmocka_unit_test(what_would_hang_without_friction_is_told),
         cmocka_unit_test(a_pipe_of_unknown_mass_is_said_to_be),
         cmocka_unit_test(a_short_riser_is_left_to_its_fittings),
     };
