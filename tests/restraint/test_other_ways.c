@@ -227,6 +227,32 @@ static void obstacles_are_looked_for_on_every_side_of_a_cross(void **state)
     }
 }
 
+/* A main of 2 m, 1.5 m from the cross and along that side of it. */
+static void mains_beside_a_cross_are_seen_on_every_side(void **state)
+{
+    (void)state;
+    static const double SIDES[][2] = {{1, 0}, {-1, 0}, {0, 1}, {0, -1}};
+    for (size_t i = 0; i < sizeof SIDES / sizeof SIDES[0]; i++) {
+        const double ux = SIDES[i][0], uy = SIDES[i][1];
+        kent_build b = a_cross();
+        (void)kent_build_point(&b, "P", 100.0 + 1.5 * ux + uy, 1.5 * uy + ux, 10.0);
+        (void)kent_build_point(&b, "Q", 100.0 + 1.5 * ux - uy, 1.5 * uy - ux, 10.0);
+        (void)kent_build_pipe(&b, "Z", "P Q", 0.1, 1000.0);
+        (void)kent_build_fixed_level(&b, "P", 60.0);
+        const int note = kent_build_note(&b, "Q");
+        b.model->notes[note].restraint = KENT_NO_RESTRAINT;
+        kent_net n = kent_net_of(b);
+        kent_restraints *r;
+        size_t count = 0;
+        (void)sized(&n, "X", &r);
+        (void)kent_space_of(&r->space, (size_t)kent_build_fitting_of(&n.build, "X"),
+                            &count);
+        assert_int_equal(count, 1);
+        kent_restraints_free(r);
+        kent_net_clear(&n);
+    }
+}
+
 /* ---- suction --------------------------------------------------------------------- */
 
 /* A bend of 90 degrees, 0.62 m outside: R - B - E. */
@@ -350,7 +376,65 @@ static void joints_beside_a_block_take_the_pull(void **state)
     assert_true(h->held);
     assert_int_equal(h->other_ways[0].taken, KENT_TAKEN_BY_JOINTS);
     kent_restraints_free(r);
+    b.model->notes[note].stated.block_share = 0.9; /* the joints' tenth is less */
+    r = sucked(&b, -80e3);
+    h = &r->fittings[kent_build_fitting_of(&b, "B")];
+    assert_int_equal(h->other_ways[0].taken, KENT_TAKEN_BY_NOTHING);
+    assert_false(h->held);
+    kent_restraints_free(r);
     kent_build_clear(&b);
+}
+
+/* Turns a case's push in plan, to a share of it, and lifts it (N). */
+static void turn_push(kent_load_case *c, double angle, double share, double up)
+{
+    kent_vec3 *t = &c->worst[KENT_SIDEWAYS].balance.thrust;
+    const kent_vec3 was = *t;
+    t->x = share * (was.x * cos(angle) - was.y * sin(angle));
+    t->y = share * (was.x * sin(angle) + was.y * cos(angle));
+    t->z = up;
+}
+
+/* 45 degrees are one way (9.19); of what goes another, the most is told; and what lifts
+ * takes off the weight (9.20). Factor 1.5, concrete of 23 kN/m3. */
+static void ways_part_at_45_degrees_and_the_most_is_told(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 5e5},
+                                           {"static", KENT_CASE_STATIC, 1.5, 4e5},
+                                           {"steady", KENT_CASE_STEADY, 1.5, 4e5}};
+    static const struct {
+        double first, second, share, up;
+        size_t ways;
+        int most;
+    } rows[] = {{44.5, 0.0, 1.0, 0.0, 0, -1},
+                {45.5, 0.0, 1.0, 0.0, 1, 1},
+                {150.0, 160.0, 0.05, 500.0, 1, 2}};
+    const double degree = PI / 180.0;
+    for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
+        kent_build b = a_bend(0.4);
+        kent_build_derive(&b);
+        const int at = kent_build_fitting_of(&b, "B");
+        kent_loads_result loads = kent_hand_loads(b.model, cases, 3);
+        kent_load_case *c = loads.fittings[at].cases;
+        turn_push(&c[1], rows[i].first * degree, 0.8 * rows[i].share, rows[i].up);
+        turn_push(&c[2], rows[i].second * degree, rows[i].share, rows[i].up);
+        kent_restraints *r = NULL;
+        kent_error err = {0};
+        assert_int_equal(kent_restraint_size(b.model, &loads, &r, &err), KENT_OK);
+        const kent_holding *h = &r->fittings[at];
+        assert_int_equal(h->other_way_count, rows[i].ways);
+        if (rows[i].ways > 0) {
+            assert_int_equal(h->other_ways[0].load_case, rows[i].most);
+        }
+        if (rows[i].up > 0.0) {
+            assert_close(h->other_ways[0].friction,
+                         0.4 * (h->block.volume * CONCRETE - 1.5 * rows[i].up), 1e-9);
+        }
+        kent_restraints_free(r);
+        kent_hand_clear(&loads);
+        kent_build_clear(&b);
+    }
 }
 
 /* An anchor block bears from either side. */
@@ -612,6 +696,8 @@ int main(void)
         cmocka_unit_test(what_nothing_takes_is_not_held),
         cmocka_unit_test(slight_suction_alone_is_left_to_the_fill),
         cmocka_unit_test(joints_beside_a_block_take_the_pull),
+        cmocka_unit_test(ways_part_at_45_degrees_and_the_most_is_told),
+        cmocka_unit_test(mains_beside_a_cross_are_seen_on_every_side),
         cmocka_unit_test(an_anchor_block_bears_the_pull_on_its_other_side),
         cmocka_unit_test(a_slight_pull_is_not_told),
         cmocka_unit_test(an_empty_run_is_not_counted_on),

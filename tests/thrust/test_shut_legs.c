@@ -240,6 +240,21 @@ static void a_cross_in_a_group_is_shut_too(void **state)
     kent_net_clear(&n);
 }
 
+/* Three pipes are enough at a wye: each of its legs is taken to have a valve. */
+static void the_legs_of_a_wye_are_shut_in_turn(void **state)
+{
+    (void)state;
+    kent_build b = a_tee();
+    const int note = kent_build_note(&b, "X");
+    b.model->notes[note].type = KENT_WYE;
+    kent_net n = finished(b);
+    const double push = RHO * G * 90.0 * area(0.32);
+    assert_int_equal(cases_of(&n, "X", "closed to"), 3);
+    assert_vector(thrust(&n, "X", "closed to N"), 0.0, 0.0);
+    assert_vector(thrust(&n, "X", "closed to E"), push, -push);
+    kent_net_clear(&n);
+}
+
 /* ---- what presses ---------------------------------------------------------------- */
 
 /* The second of a fitting's cases of a name: the same, by what asks for most in full.
@@ -397,6 +412,7 @@ int main(void)
         cmocka_unit_test(a_pump_presses_alone),
         cmocka_unit_test(a_case_says_which_legs_close),
         cmocka_unit_test(a_tee_closes_where_it_is_said),
+        cmocka_unit_test(the_legs_of_a_wye_are_shut_in_turn),
         cmocka_unit_test(a_run_with_a_dead_branch_is_not_shut),
         cmocka_unit_test(a_cross_in_a_group_is_shut_too),
         cmocka_unit_test(what_presses_asks_for_most),
