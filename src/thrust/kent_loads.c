@@ -305,7 +305,7 @@ static int loads_of_fitting(const kent_recorder *r, const kent_site_test *test,
 {
     const kent_model *m = r->model;
     const kent_fitting *f = &m->fittings[index];
-    const size_t most = 7 + m->state_count + m->march_count + 4 * KENT_PORTS;
+    const size_t most = 7 + m->state_count + m->march_count + 4 * (size_t)KENT_PORTS;
 
     loads->cases = kent_alloc(most, sizeof *loads->cases);
     if (!loads->cases) return -1;
