@@ -286,6 +286,37 @@ static void a_bend_by_pocket_calculator(void **state)
     kent_build_clear(&b);
 }
 
+/* A 24 in dead end at 200 psi: 90 480 lbf on the nominal bore (City of Renton WA,
+ * drawing S-3415), 25.80 in outside (AWWA C151): 15.6 % more. */
+static void what_the_outside_adds_to_the_bore_is_told(void **state)
+{
+    (void)state;
+    kent_port port = kent_build_port((kent_vec3){-1.0, 0.0, 0.0}, 200.0 * 6894.757, 0.0,
+                                     24 * 0.0254);
+    port.outside_diameter = port.seal_diameter = 25.80 * 0.0254;
+    kent_build b = kent_build_new();
+    (void)kent_build_ports(&b, "F", KENT_DEAD_END, &port, 1);
+    kent_build_derive(&b);
+    kent_steady nothing = {0}, *steadies = &nothing;
+    kent_error err = {0};
+    kent_recorder *r = NULL;
+    kent_loads_result *loads = NULL;
+    assert_int_equal(kent_recorder_new(b.model, &steadies, &r, &err), KENT_OK);
+    assert_int_equal(kent_recorder_finish(r, NULL, &loads, &err), KENT_OK);
+    kent_derivation d = {0};
+    kent_loads_derive(b.model, &b.model->fittings[0], &loads->fittings[0].cases[0],
+                      KENT_RESULTANT, &d);
+    const kent_line *more = kent_derivation_find(&d, "more_1");
+    assert_non_null(more);
+    const kent_instant *worst = &loads->fittings[0].cases[0].worst[KENT_RESULTANT];
+    const double thrust = kent_vec3_length(kent_instant_lasting(worst));
+    assert_close(more->value, thrust / (90480.0 * 4.448222) - 1.0, 2e-3);
+    kent_derivation_clear(&d);
+    kent_loads_free(loads);
+    kent_recorder_free(r);
+    kent_build_clear(&b);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -297,6 +328,7 @@ int main(void)
         cmocka_unit_test(changing_flow_is_worked_out_where_faces_are_given),
         cmocka_unit_test(eight_ports_fit_on_a_line),
         cmocka_unit_test(a_bend_by_pocket_calculator),
+        cmocka_unit_test(what_the_outside_adds_to_the_bore_is_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
