@@ -60,8 +60,8 @@ static const char *const LATER[] = {"draw",        "vary",        "find-limit",
                                     "probability", "from-survey", "serve"};
 enum { LATER_COUNT = sizeof LATER / sizeof LATER[0] };
 
-static const char *const PARTS[] = {"pipes", "soils",     "valves",
-                                    "rules", "materials", "pumps"};
+static const char *const PARTS[] = {"pipes",     "soils", "valves",   "rules",
+                                    "materials", "pumps", "concretes"};
 enum { PART_COUNT = sizeof PARTS / sizeof PARTS[0] };
 
 static const char ARGUMENTS[] =
@@ -72,7 +72,7 @@ static const char ARGUMENTS[] =
     "cross-check CASE\n"
     "as-built CASE [FITTING...]\n"
     "standard-table FILE\n"
-    "catalogue [pipes|materials|valves|pumps|soils|rules [WORD...]]";
+    "catalogue [pipes|materials|valves|pumps|soils|concretes|rules [WORD...]]";
 
 static const char DOCUMENT[] =
     "Restraint of buried pressure mains: thrust blocks and restrained lengths, from "

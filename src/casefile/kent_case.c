@@ -235,6 +235,7 @@ static kent_status fill_all(kent_filling *f, const kent_twig *root, const char *
     kent_fill_loads(f);
     kent_fill_limits(f);
     kent_fill_rules_check(f);
+    kent_fill_concrete(f);
     kent_fill_concrete_check(f);
     if (r->complaints->count == 0 && f->model->pipe_count == 0 &&
         f->model->note_count == 0) {

@@ -50,6 +50,7 @@ void kent_fill_rules(kent_filling *f);
 
 /* After soils and loads: a factor meant for one table's bearings, used with others. */
 void kent_fill_rules_check(kent_filling *f);
+void kent_fill_concrete(kent_filling *f);
 void kent_fill_concrete_check(kent_filling *f); /* what blocks go by unless stated */
 void kent_fill_ground(kent_filling *f);
 void kent_fill_loads(kent_filling *f);

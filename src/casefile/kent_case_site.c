@@ -219,6 +219,35 @@ void kent_fill_rules_check(kent_filling *f)
     }
 }
 
+/* Of a class of the catalogue place.line stays 0: the strength is not the case's own.
+ */
+void kent_fill_concrete(kent_filling *f)
+{
+    kent_record r;
+    kent_concrete *c = &f->model->concrete;
+    if (!kent_fill_group(f, &f->root, "concrete", &r) || !r.sound) return;
+    const int row = kent_record_field(&r, "class")->index;
+    const int cement = kent_record_field(&r, "cement")->index;
+    if (row >= 0 && kent_record_has(&r, "strength")) {
+        kent_record_complain(&f->reader, &r, "strength",
+                             "class and strength are both given; keep one");
+        return;
+    }
+    if (row >= 0) {
+        *c = f->catalogue->concretes[row];
+        kent_fill_assume_value(f, "strength of concrete", c->strength, KENT_STRENGTH,
+                               c->source);
+    } else if (kent_record_has(&r, "strength")) {
+        c->strength = kent_record_number(&r, "strength");
+        c->place = r.place;
+    }
+    if (cement >= 0) {
+        c->cement = (kent_cement)cement;
+    } else {
+        kent_fill_assume(f, "cement of concrete", "normal", "not given");
+    }
+}
+
 void kent_fill_concrete_check(kent_filling *f)
 {
     const kent_model *m = f->model;

@@ -8,8 +8,8 @@
 #include <unistd.h>
 
 /* In this order: a table of pipes refers to materials. */
-static const char *const FILES[] = {"materials.cfg", "pipes.cfg", "valves.cfg",
-                                    "soils.cfg", "rules.cfg"};
+static const char *const FILES[] = {"materials.cfg", "pipes.cfg",     "valves.cfg",
+                                    "soils.cfg",     "concretes.cfg", "rules.cfg"};
 
 void *kent_catalogue_grown(kent_reader *r, void **array, size_t *count, size_t size)
 {
@@ -34,6 +34,7 @@ static const struct {
     {"standards", "standard", kent_catalogue_add_standard},
     {"valves", "valve_type", kent_catalogue_add_valve},
     {"soils", "soil_row", kent_catalogue_add_soil},
+    {"concretes", "concrete_row", kent_catalogue_add_concrete},
     {"rules", "rule", kent_catalogue_add_rules},
 };
 
@@ -72,6 +73,10 @@ void kent_catalogue_shelve(const kent_catalogue *c, kent_reader *r)
     for (size_t i = 0; i < c->soil_count; i++) {
         kent_reader_shelve(r, KENT_SHELF_SOIL_ROWS, c->soils[i].id, (int)i, nowhere);
     }
+    for (size_t i = 0; i < c->concrete_count; i++) {
+        kent_reader_shelve(r, KENT_SHELF_CONCRETES, c->concretes[i].id, (int)i,
+                           nowhere);
+    }
     for (size_t i = 0; i < c->rule_count; i++) {
         kent_reader_shelve(r, KENT_SHELF_RULES, c->rules[i].id, (int)i, nowhere);
     }
@@ -79,6 +84,7 @@ void kent_catalogue_shelve(const kent_catalogue *c, kent_reader *r)
     kent_reader_close_shelf(r, KENT_SHELF_MATERIALS);
     kent_reader_close_shelf(r, KENT_SHELF_VALVE_TYPES);
     kent_reader_close_shelf(r, KENT_SHELF_SOIL_ROWS);
+    kent_reader_close_shelf(r, KENT_SHELF_CONCRETES);
     kent_reader_close_shelf(r, KENT_SHELF_RULES);
 }
 
@@ -173,6 +179,7 @@ void kent_catalogue_free(kent_catalogue *c)
     free(c->materials);
     free(c->valves);
     free(c->soils);
+    free(c->concretes);
     free(c->rules);
     free(c);
 }

@@ -1,5 +1,6 @@
-/* What config/ offers: pipes, materials, valves, soils and sets of design rules, each
- * row with its source and status. Read by the same strict reader as a case. */
+/* What config/ offers: pipes, materials, valves, soils, concretes and sets of design
+ * rules, each row with its source and status. Read by the same strict reader as a case.
+ */
 #ifndef KENT_CATALOGUE_H
 #define KENT_CATALOGUE_H
 
@@ -62,6 +63,8 @@ typedef struct kent_catalogue {
     size_t valve_count;
     kent_soil *soils; /* their source in kent_soil.source, with status in brackets */
     size_t soil_count;
+    kent_concrete *concretes; /* source as of soils; place.line 0 */
+    size_t concrete_count;
     kent_rules *rules;
     size_t rule_count;
 } kent_catalogue;

@@ -15,6 +15,8 @@ void kent_catalogue_add_material(kent_reader *r, kent_record *record,
                                  kent_catalogue *c);
 void kent_catalogue_add_valve(kent_reader *r, kent_record *record, kent_catalogue *c);
 void kent_catalogue_add_soil(kent_reader *r, kent_record *record, kent_catalogue *c);
+void kent_catalogue_add_concrete(kent_reader *r, kent_record *record,
+                                 kent_catalogue *c);
 void kent_catalogue_add_rules(kent_reader *r, kent_record *record, kent_catalogue *c);
 
 /* One more of an array, not yet set; NULL: no memory, and the reader knows. */

@@ -1,4 +1,4 @@
-/* Materials, types of valve and soils: one row each. */
+/* Materials, types of valve, soils and concretes: one row each. */
 #include "kent_catalogue_internal.h"
 
 #include <math.h>
@@ -86,7 +86,7 @@ double kent_material_derating(const kent_material *material, double temperature)
     return d[i - 1].factor + share * (d[i].factor - d[i - 1].factor);
 }
 
-/* ---- valves, soils --------------------------------------------------------------- */
+/* ---- valves, soils, concretes ---------------------------------------------------- */
 
 void kent_catalogue_add_valve(kent_reader *r, kent_record *record, kent_catalogue *c)
 {
@@ -119,4 +119,14 @@ void kent_catalogue_add_soil(kent_reader *r, kent_record *record, kent_catalogue
                              "its bearing is missing; give allowable_bearing, "
                              "bearing_by_depth, bearing_gradient or passive_share");
     }
+}
+
+void kent_catalogue_add_concrete(kent_reader *r, kent_record *record, kent_catalogue *c)
+{
+    kent_concrete *row = kent_catalogue_grown(r, (void **)&c->concretes,
+                                              &c->concrete_count, sizeof *row);
+    if (!row) return;
+    *row = (kent_concrete){.strength = kent_record_number(record, "strength")};
+    kent_record_copy(record, "id", NULL, row->id, sizeof row->id);
+    source_with_status(record, row->source, sizeof row->source);
 }

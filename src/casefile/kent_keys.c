@@ -201,6 +201,7 @@
 
 #define JOINTS   "push-on|mechanical|flanged|welded|fused|restrained"
 #define TRENCHES "type-1|type-2|type-3|type-4|type-5"
+#define AREAS    "outside|inside|nominal"
 #define SUPPORTS "flexible-joints|fixed-upstream|fixed-throughout"
 
 const kent_key KENT_KEYS[] = {
@@ -224,6 +225,7 @@ const kent_key KENT_KEYS[] = {
          "refines fittings found from geometry, or states one by its ports"),
     LIST("case", "as_built", "as_built", "none",
          "what was built, for the factor that it reaches"),
+    GROUP("case", "concrete", "concrete", "none", "concrete of the blocks"),
     GROUP("case", "loads", "loads", "none", "test, static level and factors"),
     GROUP("case", "limits", "limits", "none",
           "what is asked of pressures beyond the ratings of pipes and fittings"),
@@ -559,7 +561,7 @@ const kent_key KENT_KEYS[] = {
 
     GROUP("loads", "bearing_increase", "bearing_increase", "none",
           "factors on what soil may bear, by load case"),
-    WORD("loads", "thrust_area", "outside|inside|nominal", "outside",
+    WORD("loads", "thrust_area", AREAS, "outside",
          "diameter that the pressure of a leg acts on: outside, as the seal, bore, or "
          "the size its class is called by"),
     QUANTITY("loads", "cooling", KENT_WARMING, WITHIN(0.0, 100.0), "none",
@@ -824,6 +826,15 @@ const kent_key KENT_KEYS[] = {
     QUANTITY("built_leg", "length", KENT_LENGTH, WITHIN(0.0, 1e5), "required",
              "length over which every joint is restrained"),
 
+    REF("concrete", "class", "concrete_row", "none",
+        "class of the catalogue of concretes, whose strength it has"),
+    QUANTITY(
+        "concrete", "strength", KENT_STRENGTH, WITHIN(5e6, 1e8),
+        "the class's, else a low one",
+        "characteristic or specified, of a cylinder at 28 days, in place of class"),
+    WORD("concrete", "cement", "normal|rapid|slow", "normal",
+         "how its cement gains strength, for the age at the test"),
+
     /* ---- a standard table ------------------------------------------------------ */
     COUNT("standard_table", "format", WITHIN(1.0, 1.0), "required",
           "version of this format"),
@@ -852,6 +863,10 @@ const kent_key KENT_KEYS[] = {
     WORD("standard_table", "joint", JOINTS, "push-on", "kind of joint of every pipe"),
     NUMBER("standard_table", "safety_factor", WITHIN(1.0, 10.0), "the design rules'",
            "factor on the thrust"),
+    WORD("standard_table", "thrust_area", AREAS, "outside",
+         "diameter that the pressure acts on, as in a case"),
+    GROUP("standard_table", "concrete", "concrete", "none",
+          "concrete of the blocks, as in a case"),
     GROUP("standard_table", "design_rules", "design_rules", "none",
           "rules of block design, as in a case"),
     WORD("standard_table", "restraint", "thrust-block|restrained-joints|both", "both",
@@ -868,6 +883,8 @@ const kent_key KENT_KEYS[] = {
              "the class's", "nominal thickness of the structural wall"),
     QUANTITY("standard_size", "lining_thickness", KENT_DIAMETER, WITHIN(0.0, 0.5),
              "the class's, else 0 mm", "thickness of the lining"),
+    QUANTITY("standard_size", "nominal_size", KENT_DIAMETER, BETWEEN(0.0, 20.0),
+             "the class's", "size it is called by, of thrust_area \"nominal\""),
     QUANTITY("standard_size", "pipe_length", KENT_LENGTH, BETWEEN(0.0, 100.0), "none",
              "laying length of one pipe; restrained lengths are rounded up to it"),
 
@@ -878,6 +895,7 @@ const kent_key KENT_KEYS[] = {
     LIST("catalogue", "materials", "material", "none", "materials of pipes"),
     LIST("catalogue", "valves", "valve_type", "none", "types of valve"),
     LIST("catalogue", "soils", "soil_row", "none", "presumptive bearings of soils"),
+    LIST("catalogue", "concretes", "concrete_row", "none", "concretes by class"),
     LIST("catalogue", "rules", "rule", "none", "sets of design rules"),
 
     ID("standard", "id", "required", "first part of the ids of its pipes"),
@@ -955,6 +973,11 @@ const kent_key KENT_KEYS[] = {
     SOIL_VALUES("soil_row", "one of the four bearings"),
     PROVENANCE("soil_row"),
 
+    TEXT("concrete_row", "id", 39, "required", "name of the class, as \"C25/30\""),
+    QUANTITY("concrete_row", "strength", KENT_STRENGTH, WITHIN(5e6, 1e8), "required",
+             "characteristic or specified, of a cylinder at 28 days"),
+    PROVENANCE("concrete_row"),
+
     ID("rule", "id", "required", "name of the set"),
     TEXT("rule", "based_on", 39, "none",
          "set above it in the file, whose values hold where none is given"),
@@ -986,6 +1009,7 @@ static const struct {
     {"fitting", "a fitting"},
     {"ground_slope", "ground_slope"},
     {"port", "a port"},
+    {"concrete", "concrete"},
     {"loads", "loads"},
     {"limits", "limits"},
     {"factors", "factors"},
@@ -1016,6 +1040,7 @@ static const struct {
     {"material", "a material of the catalogue"},
     {"valve_type", "a valve type of the catalogue"},
     {"soil_row", "a soil of the catalogue"},
+    {"concrete_row", "a concrete of the catalogue"},
     {"rule", "a set of design rules"},
 };
 

@@ -28,6 +28,7 @@ static const struct {
     [KENT_SHELF_MATERIALS] = {"material", "material"},
     [KENT_SHELF_VALVE_TYPES] = {"valve_type", "valve type"},
     [KENT_SHELF_SOIL_ROWS] = {"soil_row", "soil of the catalogue"},
+    [KENT_SHELF_CONCRETES] = {"concrete_row", "class of concrete"},
     [KENT_SHELF_RULES] = {"rule", "set of rules"},
 };
 
@@ -274,6 +275,7 @@ static const char *where_to_look(const kent_reader *r, kent_shelf shelf)
     case KENT_SHELF_MATERIALS:
     case KENT_SHELF_VALVE_TYPES:
     case KENT_SHELF_SOIL_ROWS:
+    case KENT_SHELF_CONCRETES:
     case KENT_SHELF_RULES:
         return "; 'kentledge catalogue' prints those there are";
     case KENT_SHELF_SOILS:

@@ -27,6 +27,7 @@ typedef enum kent_shelf {
     KENT_SHELF_MATERIALS,
     KENT_SHELF_VALVE_TYPES,
     KENT_SHELF_SOIL_ROWS,
+    KENT_SHELF_CONCRETES,
     KENT_SHELF_RULES,
     KENT_SHELF_COUNT
 } kent_shelf;

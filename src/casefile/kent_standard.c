@@ -87,12 +87,26 @@ static void list_name(reading *r, const char *key, const kent_twig *twig,
     }
 }
 
-/* Whether the joint's seal lets the pressure act on the bore alone, which a size has to
- * tell then. */
-static bool seals_on_bore(const reading *r)
+/* What the table goes by where the pressure acts on the bore alone, which a size has to
+ * tell then; NULL: it does not. */
+static const char *bore_by(const reading *r)
 {
-    const int joint = kent_record_field(&r->f->root, "joint")->index;
-    return joint == KENT_FLANGED || joint == KENT_WELDED || joint == KENT_FUSED;
+    const kent_field *joint = kent_record_field(&r->f->root, "joint");
+    const kent_field *area = kent_record_field(&r->f->root, "thrust_area");
+    const bool rigid = joint->index == KENT_FLANGED || joint->index == KENT_WELDED ||
+                       joint->index == KENT_FUSED;
+    if (rigid) return joint->text;
+    return area->index == KENT_AREA_INSIDE ? area->text : NULL;
+}
+
+static void check_nominal(reading *r, kent_record *size, int row)
+{
+    const int area = kent_record_field(&r->f->root, "thrust_area")->index;
+    if (!size->sound || area != KENT_AREA_NOMINAL || row >= 0) return;
+    if (kent_record_has(size, "nominal_size")) return;
+    kent_record_complain(&r->f->reader, size, NULL,
+                         "thrust_area \"nominal\" goes by the size it is called by; "
+                         "give nominal_size or pipe_class");
 }
 
 static void check_size(reading *r, kent_record *size, size_t index)
@@ -112,13 +126,14 @@ static void check_size(reading *r, kent_record *size, size_t index)
         kent_record_complain(reader, size, "wall_thickness",
                              "its wall and lining leave no bore within its outside "
                              "diameter");
-    } else if (row < 0 && !kent_record_has(size, "wall_thickness") &&
-               seals_on_bore(r)) {
+    } else if (row < 0 && !kent_record_has(size, "wall_thickness") && bore_by(r)) {
+        const bool joint = strcmp(bore_by(r), "inside") != 0;
         kent_record_complain(reader, size, NULL,
-                             "with %s joints the pressure acts on the bore, and it is "
+                             "with %s \"%s\" the pressure acts on the bore, and it is "
                              "not known; give wall_thickness or pipe_class",
-                             kent_record_field(&r->f->root, "joint")->text);
+                             joint ? "joint" : "thrust_area", bore_by(r));
     }
+    check_nominal(r, size, row);
 }
 
 static void list_sizes(reading *r)

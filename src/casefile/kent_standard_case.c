@@ -220,10 +220,11 @@ static kent_twig fittings_of(kent_standard_cell *c)
 
 static kent_twig loads_of(kent_standard_cell *c)
 {
-    kent_twig *row = take(c, 2);
+    kent_twig *row = take(c, 3);
     size_t count = 0;
     row[count++] = text(c->root, "static_level", c->level);
     count += fill_as_said(c, "safety_factor", &row[count]);
+    count += fill_as_said(c, "thrust_area", &row[count]);
     return parent(c->root, KENT_TWIG_GROUP, "loads", row, count);
 }
 
@@ -237,8 +238,8 @@ static kent_twig site_of(kent_standard_cell *c)
 
 const kent_twig *kent_standard_case(kent_standard_cell *c)
 {
-    static const char *const KEYS[] = {"format", "title", "units", "project",
-                                       "design_rules"};
+    static const char *const KEYS[] = {"format",  "title",    "units",
+                                       "project", "concrete", "design_rules"};
     const size_t keys = sizeof KEYS / sizeof KEYS[0];
     const double density = kent_water_at(TEMPERATURE).density;
     (void)snprintf(c->level, sizeof c->level, "%.17g m",

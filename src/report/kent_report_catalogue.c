@@ -346,6 +346,26 @@ static void list_soils(const kent_listing *l)
     finish(l, "Soils: allowable horizontal bearing", &t);
 }
 
+static void list_concretes(const kent_listing *l)
+{
+    const kent_shown strength = kent_shown_unit(KENT_STRENGTH, l->units);
+    const kent_column columns[] = {
+        {"concrete", "", KENT_ALIGN_LEFT, false},
+        {"strength", strength.text, KENT_ALIGN_RIGHT, false},
+        {"source", "", KENT_ALIGN_LEFT, false},
+    };
+    kent_table t = {.columns = columns,
+                    .column_count = sizeof columns / sizeof columns[0]};
+    for (size_t i = 0; i < l->catalogue->concrete_count; i++) {
+        const kent_concrete *c = &l->catalogue->concretes[i];
+        if (!wanted(l, c->id, "", "", c->source, "")) continue;
+        kent_table_cell(&t, "%s", c->id);
+        quantity(l, &t, KENT_STRENGTH, c->strength);
+        source(l, &t, c->source);
+    }
+    finish(l, "Concretes: strength of a cylinder after 28 days", &t);
+}
+
 /* Sets of rules have too many values for a row: one paragraph each. */
 static void list_rules(const kent_listing *l)
 {
@@ -376,7 +396,8 @@ kent_status kent_report_catalogue(const kent_catalogue *c, const kent_choice *ch
         void (*list)(const kent_listing *l);
     } PARTS[] = {{"pipes", list_pipes},   {"materials", list_materials},
                  {"valves", list_valves}, {"pumps", list_pumps},
-                 {"soils", list_soils},   {"rules", list_rules}};
+                 {"soils", list_soils},   {"concretes", list_concretes},
+                 {"rules", list_rules}};
     kent_text out = {0};
     kent_notes sources = {0};
     const kent_listing l = {.catalogue = c,

@@ -75,19 +75,40 @@ typedef struct teller {
     kent_notes *out;
 } teller;
 
+static void tell_area(const teller *w)
+{
+    const kent_joint joint = w->m->pipes[0].joint;
+    const bool gasketed = joint == KENT_RESTRAINED || kent_joint_slips(joint);
+    const char *on = "outside diameter of the pipe";
+    switch (w->m->loads.thrust_area) {
+    case KENT_AREA_OUTSIDE:
+        break;
+    case KENT_AREA_INSIDE:
+        on = "bore of the pipe";
+        break;
+    case KENT_AREA_NOMINAL:
+        on = "nominal size of the pipe";
+        break;
+    }
+    if (gasketed && w->m->loads.thrust_area != KENT_AREA_OUTSIDE) {
+        kent_notes_add(w->out,
+                       "thrust: the pressure is taken to act on the %s, as thrust_area "
+                       "says; %s joints seal on the outside diameter",
+                       on, kent_joint_word(joint));
+        return;
+    }
+    kent_notes_add(w->out, "thrust: the pressure acts on the %s, as %s joints seal",
+                   gasketed ? on : "bore of the pipe", kent_joint_word(joint));
+}
+
 static void tell_pressure(const teller *w)
 {
-    const kent_fitting *f = &w->m->fittings[w->r->cells[0].fitting];
-    const kent_port *port = &w->m->ports[f->port_first];
-    const bool outside = fabs(port->seal_diameter - port->outside_diameter) <= 1e-9;
     kent_notes_add(
         w->out,
         "design pressure %s gauge in still water at every fitting: it has to be the "
         "highest that service, surge and test bring there",
         kent_said_of(KENT_PRESSURE, w->units, w->t->pressure).s);
-    kent_notes_add(w->out, "thrust: the pressure acts on the %s, as %s joints seal",
-                   outside ? "outside diameter of the pipe" : "bore of the pipe",
-                   kent_joint_word(w->m->pipes[0].joint));
+    tell_area(w);
     kent_notes_add(
         w->out,
         "safety factor %.2f on the thrust, %s; beside each soil stands whether "
@@ -117,6 +138,15 @@ static void tell_ground(const teller *w)
     kent_notes_add(w->out, "%s", kent_text_of(&words));
     w->out->failed = w->out->failed || words.failed;
     kent_text_clear(&words);
+}
+
+/* A class or a lack of one is told among what is assumed. */
+static void tell_concrete(const teller *w)
+{
+    const kent_concrete *c = &w->m->concrete;
+    if (c->place.line == 0) return;
+    kent_notes_add(w->out, "strength of concrete %s, as given",
+                   kent_said_of(KENT_STRENGTH, w->units, c->strength).s);
 }
 
 static void tell_rules(const teller *w)
@@ -165,6 +195,10 @@ static void tell_sizes(const teller *w)
         const double outside = w->t->cells[at]->pipes[0].outside_diameter;
         kent_text_add(&words, "%s%s %s", i > 0 ? ", " : "", w->t->sizes[i],
                       kent_said_of(KENT_DIAMETER, w->units, outside).s);
+        if (w->m->loads.thrust_area != KENT_AREA_NOMINAL) continue;
+        const double nominal = w->t->cells[at]->pipes[0].nominal_size;
+        kent_text_add(&words, " (nominal %s)",
+                      kent_said_of(KENT_DIAMETER, w->units, nominal).s);
     }
     kent_notes_add(w->out, "%s", kent_text_of(&words));
     w->out->failed = w->out->failed || words.failed;
@@ -213,6 +247,7 @@ void kent_standard_assumptions(const kent_standard_result *r, kent_system units,
         .r = r, .t = r->table, .m = r->cells[0].model, .units = units, .out = out};
     tell_pressure(&w);
     tell_ground(&w);
+    tell_concrete(&w);
     tell_rules(&w);
     tell_fittings(&w);
     tell_sizes(&w);

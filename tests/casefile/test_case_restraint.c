@@ -236,6 +236,38 @@ static void a_pipe_cools_by_its_material_unless_it_says_otherwise(void **state)
     kent_catalogue_free(c);
 }
 
+/* ---- concrete -------------------------------------------------------------------- */
+
+static void concrete_is_of_a_class_or_has_a_strength_of_its_own(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = with(
+        c, GROUND, "concrete = { class = \"C25/30\"; cement = \"rapid\"; };\n" GROUND);
+    assert_close(m->concrete.strength, 25e6, 1e-12);
+    assert_string_equal(m->concrete.id, "C25/30");
+    assert_int_equal(m->concrete.cement, KENT_CEMENT_RAPID);
+    assert_int_equal(m->concrete.place.line, 0); /* the catalogue's */
+    assert_non_null(strstr(assumed(m, "strength of concrete"), "EN 206"));
+    assert_null(assumed(m, "cement of concrete"));
+    kent_model_free(m);
+
+    m = with(c, GROUND, "concrete = { strength = \"28 MPa\"; };\n" GROUND);
+    assert_close(m->concrete.strength, 28e6, 1e-12);
+    assert_true(m->concrete.place.line > 0);
+    assert_null(assumed(m, "strength of concrete"));
+    assert_int_equal(m->concrete.cement, KENT_CEMENT_NORMAL);
+    assert_non_null(assumed(m, "cement of concrete"));
+    kent_model_free(m);
+
+    m = with(c, GROUND, "concrete = { cement = \"slow\"; };\n" GROUND);
+    assert_true(isnan(m->concrete.strength));
+    assert_int_equal(m->concrete.cement, KENT_CEMENT_SLOW);
+    assert_non_null(strstr(assumed(m, "strength of concrete"), "low class"));
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
 /* ---- the project ----------------------------------------------------------------- */
 
 static void a_project_has_a_utility_and_a_date(void **state)
@@ -262,6 +294,7 @@ int main(void)
         cmocka_unit_test(pieces_in_line_are_types_of_a_case),
         cmocka_unit_test(loads_say_what_bears_more_and_what_is_left_out),
         cmocka_unit_test(a_pipe_cools_by_its_material_unless_it_says_otherwise),
+        cmocka_unit_test(concrete_is_of_a_class_or_has_a_strength_of_its_own),
         cmocka_unit_test(a_project_has_a_utility_and_a_date),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -311,6 +311,20 @@ static void add_soils(kent_text *out, const kent_catalogue *c)
     }
 }
 
+static void add_concretes(kent_text *out, const kent_catalogue *c)
+{
+    kent_text_add(out,
+                  "\n## Concretes\n\nStrength of a cylinder after 28 days, "
+                  "characteristic (EN) or specified (psi).\n\n"
+                  "| id | strength, MPa | source (status) |\n| --- | --- | --- |\n");
+    for (size_t i = 0; i < c->concrete_count; i++) {
+        const kent_concrete *row = &c->concretes[i];
+        kent_text_add(out, "| `%s` |", row->id);
+        add_number(out, row->strength / 1e6, 4);
+        kent_text_add(out, " %s |\n", row->source);
+    }
+}
+
 static void add_rules(kent_text *out, const kent_catalogue *c)
 {
     kent_text_add(
@@ -396,6 +410,7 @@ static void add_document(kent_text *out)
     add_materials(out, c);
     add_valves(out, c);
     add_soils(out, c);
+    add_concretes(out, c);
     add_rules(out, c);
     add_asked_by_rules(out, c);
     kent_catalogue_free(c);

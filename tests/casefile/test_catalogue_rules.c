@@ -147,12 +147,43 @@ static void sets_differ_in_what_they_are_for(void **state)
     kent_catalogue_free(c);
 }
 
+/* EN 206, table 12, and EN 1992-1-1, table 3.1 (from memory): a class names the
+ * strength of a cylinder and of a cube, MPa. A class in psi has the strength of its
+ * name. */
+static void classes_of_concrete_have_the_strength_of_a_cylinder(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *id;
+        double strength; /* Pa */
+    } ROWS[] = {{"C12/15", 12e6},
+                {"C16/20", 16e6},
+                {"C20/25", 20e6},
+                {"C25/30", 25e6},
+                {"C30/37", 30e6},
+                {"C35/45", 35e6},
+                {"2000-psi", 13.789514586e6},
+                {"2500-psi", 17.236893232e6},
+                {"3000-psi", 20.684271879e6},
+                {"3500-psi", 24.131650525e6},
+                {"4000-psi", 27.579029172e6}};
+    kent_catalogue *c = read_catalogue();
+    assert_int_equal(c->concrete_count, sizeof ROWS / sizeof ROWS[0]);
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        assert_string_equal(c->concretes[i].id, ROWS[i].id);
+        assert_close(c->concretes[i].strength, ROWS[i].strength, 1e-9);
+        assert_non_null(strstr(c->concretes[i].source, "(memory)"));
+    }
+    kent_catalogue_free(c);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(shapes_of_blocks_are_those_of_common_practice),
         cmocka_unit_test(factors_are_those_of_their_sources),
         cmocka_unit_test(blocks_are_asked_for_what_is_common_practice),
+        cmocka_unit_test(classes_of_concrete_have_the_strength_of_a_cylinder),
         cmocka_unit_test(sets_differ_in_what_they_are_for),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

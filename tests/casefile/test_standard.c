@@ -322,17 +322,17 @@ static void published_bearing_areas_come_out(void **state)
     }
 }
 
-/* City of Renton drawing S-3415: thrusts on the nominal bore. A table by nominal sizes
- * says so where it names them. */
+/* City of Renton drawing S-3415: thrusts on the nominal bore, of pipe that is larger
+ * outside (AWWA C151: 25.80, 17.40 and 11.10 in). */
 static void thrusts_on_the_nominal_bore_come_out_where_sizes_are_nominal(void **state)
 {
     (void)state;
     static const struct {
-        const char *pressure, *size;
+        const char *pressure, *size, *outside;
         double end, square, eighth, sixteenth; /* lbf; NAN: not printed */
-    } ROWS[] = {{"200 psi", "24 in", 90480.0, 127980.0, 69200.0, NAN},
-                {"225 psi", "16 in", 45250.0, 64000.0, 34620.0, 17650.0},
-                {"275 psi", "10 in", 21620.0, 30570.0, 16540.0, NAN}};
+    } ROWS[] = {{"200 psi", "24 in", "25.80 in", 90480.0, 127980.0, 69200.0, NAN},
+                {"225 psi", "16 in", "17.40 in", 45250.0, 64000.0, 34620.0, 17650.0},
+                {"275 psi", "10 in", "11.10 in", 21620.0, 30570.0, 16540.0, NAN}};
     static const char *const FITTINGS[] = {"dead-end", "bend 90 deg", "bend 45 deg",
                                            "bend 22.5 deg"};
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
@@ -341,17 +341,37 @@ static void thrusts_on_the_nominal_bore_come_out_where_sizes_are_nominal(void **
         char text[1000];
         (void)snprintf(text, sizeof text,
                        "format = 1;\nunits = \"US\";\npressure = \"%s\";\n"
-                       "sizes = ( { name = \"n\"; outside_diameter = \"%s\"; } );\n"
+                       "thrust_area = \"nominal\";\nsizes = ( { name = \"n\"; "
+                       "outside_diameter = \"%s\"; nominal_size = \"%s\"; } );\n"
                        "fittings = ( \"dead-end\", \"bend 90 deg\", \"bend 45 deg\", "
                        "\"bend 22.5 deg\" );\nsoils = ( \"sand-SP\" );\n"
                        "cover = \"4 ft\";\n",
-                       ROWS[i].pressure, ROWS[i].size);
+                       ROWS[i].pressure, ROWS[i].outside, ROWS[i].size);
         worked w = work_out(text);
         for (size_t k = 0; k < 4; k++) {
             if (isnan(wanted[k])) continue;
             assert_close(cell(&w, "sand-SP", "n", FITTINGS[k])->thrust, wanted[k] * LBF,
                          1e-3);
         }
+        let_go(&w);
+    }
+}
+
+/* The same blocks' concrete is checked by what the table says of it. */
+static void a_table_may_name_its_concrete(void **state)
+{
+    (void)state;
+    static const char *const SAYS[] = {"", "concrete = { class = \"C30/37\"; };\n",
+                                       "concrete = { strength = \"12 MPa\"; };\n"};
+    static const double STRENGTH[] = {16e6, 30e6, 12e6}; /* Pa; the low class C16/20 */
+    for (size_t i = 0; i < 3; i++) {
+        char text[2000];
+        (void)snprintf(text, sizeof text, "%s%s", TABLE, SAYS[i]);
+        worked w = work_out(text);
+        const kent_standard_cell_result *c =
+            cell(&w, "bank", "DI-EN545-C40-DN300", "bend 45 deg");
+        assert_close(c->holding.concrete.strength, STRENGTH[i], 1e-12);
+        assert_int_equal(c->holding.concrete.strength_assumed, i == 0);
         let_go(&w);
     }
 }
@@ -428,6 +448,7 @@ int main(void)
         cmocka_unit_test(a_pressure_above_the_rating_of_a_size_is_noticed),
         cmocka_unit_test(published_bearing_areas_come_out),
         cmocka_unit_test(thrusts_on_the_nominal_bore_come_out_where_sizes_are_nominal),
+        cmocka_unit_test(a_table_may_name_its_concrete),
         cmocka_unit_test(a_crest_pushes_up_and_along_as_handbooks_have_it),
         cmocka_unit_test(restrained_lengths_of_the_handbooks_form_come_out),
     };

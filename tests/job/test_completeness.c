@@ -69,6 +69,7 @@ static void a_main_without_test_and_surge_is_not_complete(void **state)
     assert_false(r->completeness[KENT_NEEDS_SURGE].present);
     assert_false(r->completeness[KENT_NEEDS_SHUT_OFF].asked); /* no pump */
     assert_true(says(r, "not complete: no site test"));
+    assert_true(says(r, "or say why not by waived = ( ( \"test\", "));
     assert_true(says(r, "not complete: no scenario that decides"));
     assert_false(says(r, "not complete: pumps"));
     kent_results_free(r);
