@@ -180,9 +180,11 @@ static void fill_cooling(kent_filling *f, kent_record *r)
     const kent_model *m = f->model;
     f->model->loads.cooling = kent_record_number(r, "cooling");
     if (!kent_record_has(r, "cooling")) return;
+    bool shortens = false;
     for (size_t i = 0; i < m->pipe_count; i++) {
         const kent_pipe *p = &m->pipes[i];
         if (p->joint != KENT_FUSED && p->joint != KENT_WELDED) continue;
+        shortens = true;
         if (isnan(p->expansion)) {
             kent_record_complain(&f->reader, r, "cooling",
                                  "cooling needs the expansion of pipe \"%s\", which is "
@@ -191,6 +193,11 @@ static void fill_cooling(kent_filling *f, kent_record *r)
             return;
         }
         assume_material(f, p);
+    }
+    if (!shortens) {
+        kent_notes_add(&f->model->cautions,
+                       "cooling is of fused and welded pipe, and the case has none: "
+                       "nothing is pulled by it");
     }
 }
 

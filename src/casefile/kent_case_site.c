@@ -198,6 +198,56 @@ static bool has_bearing_of(const kent_filling *f, const kent_soil *soil,
     return false;
 }
 
+/* Factor on the thrust in load cases of a kind. */
+static double factor_in(const kent_model *m, kent_case_kind kind)
+{
+    const kent_rules *rules = &m->rules;
+    const bool test = kind == KENT_CASE_TEST && !isnan(rules->factor_test);
+    if (!isnan(m->loads.factor[kind])) return m->loads.factor[kind];
+    return test ? rules->factor_test : rules->safety_factor;
+}
+
+/* Rules of the case's own that what it says of loads leaves without effect. */
+static void tell_unasked(kent_filling *f, bool all_stated)
+{
+    const kent_model *m = f->model;
+    const kent_rules *rules = &m->rules;
+    const kent_twig *own = kent_record_field(&f->root, "design_rules")->twig;
+    const double tested = factor_in(m, KENT_CASE_TEST);
+    double most = tested;
+    for (int i = 0; i <= KENT_CASE_SUCTION; i++) {
+        most = fmax(most, factor_in(m, (kent_case_kind)i));
+    }
+    const struct {
+        const char *key;
+        double asked, up_to;
+    } stands[] = {{"factor_sliding", rules->factor_sliding, most},
+                  {"factor_overturning", rules->factor_overturning, most},
+                  {"factor_stability_test", rules->factor_stability_test, tested}};
+    for (size_t i = 0; i < sizeof stands / sizeof stands[0]; i++) {
+        if (!kent_twig_member(own, stands[i].key)) continue;
+        if (stands[i].asked <= stands[i].up_to) continue;
+        kent_notes_add(&f->model->cautions,
+                       "design rule %s, %.2f, is asked only up to the factor on the "
+                       "thrust, %.2f: raise that in loads to have it asked in full",
+                       stands[i].key, stands[i].asked, stands[i].up_to);
+    }
+    if (all_stated && kent_twig_member(own, "safety_factor")) {
+        kent_notes_add(&f->model->cautions,
+                       "design rule safety_factor, %.2f, is not asked: loads states "
+                       "the factor; leave out one of them",
+                       rules->safety_factor);
+    }
+    if (!isnan(m->loads.factor[KENT_CASE_TEST]) &&
+        kent_twig_member(own, "factor_test")) {
+        kent_notes_add(&f->model->cautions,
+                       "design rule factor_test, %.2f, is not asked: loads states the "
+                       "factor of the test, %.2f; say it there, as factors = { test = "
+                       "%.2f; }",
+                       rules->factor_test, tested, rules->factor_test);
+    }
+}
+
 void kent_fill_rules_check(kent_filling *f)
 {
     const kent_rules *rules = &f->model->rules;
@@ -206,6 +256,7 @@ void kent_fill_rules_check(kent_filling *f)
     for (size_t i = 0; i < sizeof l->factor / sizeof l->factor[0]; i++) {
         asked = asked || isnan(l->factor[i]);
     }
+    if (kent_record_has(&f->root, "design_rules")) tell_unasked(f, !asked);
     if (!asked || rules->soils[0] == '\0') return;
     for (size_t i = 0; i < f->model->soil_count; i++) {
         const kent_soil *soil = &f->model->soils[i];

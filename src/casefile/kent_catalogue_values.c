@@ -261,6 +261,10 @@ static void read_wall_friction(kent_reader *r, kent_record *record, kent_soil *s
                                    "a part"
                                  : "wall_friction is above friction_angle; soil slides "
                                    "within itself first: give at most that");
+    } else if (record->sound && isnan(soil->passive_share)) {
+        kent_record_complain(r, record, "wall_friction",
+                             "wall_friction is of the passive pressure, which no "
+                             "bearing goes by; give passive_share, or leave it out");
     }
 }
 

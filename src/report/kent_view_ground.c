@@ -241,6 +241,17 @@ static void add_factors(const kent_view *v, kent_text *out)
     kent_text_add(out, ". Design rules: %s.", v->model->rules.id);
 }
 
+/* Nothing where the case says nothing of it: that is assumed, and told there. */
+static void add_concrete(const kent_view *v, kent_text *out)
+{
+    static const char *const CEMENTS[] = {"normal", "rapid", "slow"};
+    const kent_concrete *c = &v->model->concrete;
+    if (!(c->strength > 0.0)) return;
+    kent_text_add(out, " Concrete%s%s of %s, %s cement.", c->id[0] ? " " : "", c->id,
+                  kent_shown_with_unit(KENT_STRENGTH, v->units, c->strength).text,
+                  CEMENTS[c->cement]);
+}
+
 /* What the case decides of thrusts and soils, and does without. */
 static void add_choices(const kent_view *v, kent_text *out)
 {
@@ -343,6 +354,7 @@ void kent_view_loads(const kent_view *v)
     }
     add_factors(v, &words);
     add_choices(v, &words);
+    add_concrete(v, &words);
     add_lowest(v, &words);
     add_rated(v, &words);
     kent_view_say(v, "", &words);

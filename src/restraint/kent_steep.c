@@ -83,12 +83,13 @@ static void find_forces(const kent_model *m, kent_steep *s)
 {
     const kent_pipe *p = &m->pipes[s->pipe];
     const double bore = p->inside_diameter;
+    const double stated = m->loads.factor[KENT_CASE_STATIC]; /* weight lasts as that */
     const double water = m->water.density * m->gravity * 0.25 * PI * bore * bore;
     const double pipe = kent_pull_pipe_weight(p, m->gravity);
 
     s->weight = pipe + water;
     s->along = s->weight * sin(s->angle); /* 23.12 */
-    s->factor = m->rules.safety_factor;
+    s->factor = isnan(stated) ? m->rules.safety_factor : stated;
     find_friction(m, s);
     s->net = s->factor * s->along - s->friction; /* 23.13 */
     if (s->net < 0.0) s->net = 0.0;              /* not NAN */
@@ -179,7 +180,10 @@ static void derive_weight(const kent_model *m, const kent_steep *s, kent_derivat
     kent_derivation_put(d, "b", s->angle, KENT_ANGLE, KENT_COMPUTED, "its slope");
     kent_derivation_work(d, "Wb", s->along, KENT_FORCE_PER_LENGTH, "(Wp + Ww)*sin(b)",
                          "23.12", "what slides");
-    kent_derivation_put(d, "SF", s->factor, KENT_RATIO, KENT_CATALOGUE, "factor");
+    kent_derivation_put(d, "SF", s->factor, KENT_RATIO,
+                        isnan(m->loads.factor[KENT_CASE_STATIC]) ? KENT_CATALOGUE
+                                                                 : KENT_GIVEN,
+                        "factor");
 }
 
 static void derive_steep(const kent_model *m, kent_steep *s)

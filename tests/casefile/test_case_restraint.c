@@ -58,8 +58,10 @@ static void a_base_is_held_by_friction_or_by_adhesion(void **state)
     kent_model *m =
         with(c, GROUND,
              "soils = ( { id = \"bank\"; from = \"bedrock-by-gradient-IBC\"; "
-             "base_cohesion = \"6 kPa\"; friction_angle = \"30 deg\"; "
-             "wall_friction = \"15 deg\"; } );\nground = { soil = \"bank\"");
+             "base_cohesion = \"6 kPa\"; unit_weight = \"18 kN/m^3\"; friction_angle = "
+             "\"30 deg\"; passive_share = "
+             "0.5; bearing_route = \"passive\"; wall_friction = \"15 deg\"; } "
+             ");\nground = { soil = \"bank\"");
     assert_close(m->soils[0].base_cohesion, 6e3, 1e-12);
     assert_true(isnan(m->soils[0].base_friction)); /* the row's 0.70 has gone */
     assert_close(m->soils[0].wall_friction, 15.0 * DEGREE, 1e-12);
@@ -236,6 +238,42 @@ static void a_pipe_cools_by_its_material_unless_it_says_otherwise(void **state)
     kent_catalogue_free(c);
 }
 
+static void a_rule_without_effect_is_said_to_be(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *rules, *says; /* with a factor of 1.5 on the thrust */
+        bool told;
+    } ROWS[] = {
+        {"factor_sliding = 2.0;", "factor_sliding, 2.00, is asked only up", true},
+        {"factor_sliding = 1.4;", "is asked only up", false},
+        {"factor_overturning = 1.6;", "factor_overturning, 1.60, is", true},
+        {"factor_stability_test = 1.6;", "factor_stability_test, 1.60", true},
+        {"safety_factor = 2.0;", "safety_factor, 2.00, is not asked", true},
+        {"factor_test = 2.0;", "factors = { test = 2.00; }", true},
+        {"least_cover = \"0.7 m\";", "is not asked", false}};
+    kent_catalogue *c = read_catalogue();
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char piece[200];
+        (void)snprintf(piece, sizeof piece, "design_rules = { %s };\n" GROUND,
+                       ROWS[i].rules);
+        kent_model *m = with(c, GROUND, piece);
+        assert_int_equal(cautions_with(m, ROWS[i].says), ROWS[i].told);
+        kent_model_free(m);
+    }
+    kent_catalogue_free(c);
+}
+
+static void cooling_of_a_main_that_slips_is_said_to_pull_nothing(void **state)
+{
+    (void)state;
+    kent_catalogue *c = read_catalogue();
+    kent_model *m = with(c, LOADS_KEY, LOADS_KEY " cooling = \"10 K\";");
+    assert_int_equal(cautions_with(m, "cooling is of fused and welded pipe"), 1);
+    kent_model_free(m);
+    kent_catalogue_free(c);
+}
+
 /* ---- concrete -------------------------------------------------------------------- */
 
 static void concrete_is_of_a_class_or_has_a_strength_of_its_own(void **state)
@@ -294,6 +332,8 @@ int main(void)
         cmocka_unit_test(pieces_in_line_are_types_of_a_case),
         cmocka_unit_test(loads_say_what_bears_more_and_what_is_left_out),
         cmocka_unit_test(a_pipe_cools_by_its_material_unless_it_says_otherwise),
+        cmocka_unit_test(a_rule_without_effect_is_said_to_be),
+        cmocka_unit_test(cooling_of_a_main_that_slips_is_said_to_pull_nothing),
         cmocka_unit_test(concrete_is_of_a_class_or_has_a_strength_of_its_own),
         cmocka_unit_test(a_project_has_a_utility_and_a_date),
     };

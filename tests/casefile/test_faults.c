@@ -356,6 +356,7 @@ static const struct {
     {"material", "steel", NULL},
     {"valve_type", "butterfly", NULL},
     {"soil_row", "silt-ML", NULL},
+    {"concrete_row", "C25/30", NULL},
     {"rule", "common-practice", NULL},
 };
 

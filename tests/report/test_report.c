@@ -746,7 +746,7 @@ static void the_catalogue_lists_each_row_with_its_source(void **state)
         assert_int_equal(
             kent_report_catalogue(c, &all, &o, kent_mixed_sink(&out), &rows), KENT_OK);
         assert_int_equal(rows, c->pipe_count + c->material_count + c->valve_count +
-                                   c->soil_count + c->rule_count +
+                                   c->soil_count + c->concrete_count + c->rule_count +
                                    3); /* characteristics of pumps */
         const char *text = kent_text_of(&out);
         assert_narrow(text);

@@ -443,6 +443,30 @@ static void what_is_asked_of_pressures_is_told(void **state)
     kent_build_clear(&b);
 }
 
+static void what_a_case_decides_of_loads_and_concrete_is_told(void **state)
+{
+    (void)state;
+    kent_build b = bent_main(45.0);
+    kent_build_derive(&b);
+    assert_silent(&b, "Soil bears");
+    assert_silent(&b, "Thrusts on the");
+    assert_silent(&b, "Concrete");
+    b.model->loads.bearing_increase[KENT_CASE_OCCASIONAL] = 1.33;
+    b.model->loads.thrust_area = KENT_AREA_NOMINAL;
+    b.model->loads.cooling = 12.0;
+    b.model->concrete.strength = 25e6;
+    b.model->concrete.cement = KENT_CEMENT_SLOW;
+    assert_says(&b, KENT_SI, "Soil bears 1.33 times as much, occasional.");
+    assert_says(&b, KENT_SI, "Thrusts on the nominal size, not the outside diameter.");
+    assert_says(&b, KENT_SI, "Fused and welded mains cool by 12");
+    assert_says(&b, KENT_SI, "Concrete of 25.0 MPa, slow cement.");
+    (void)snprintf(b.model->concrete.id, sizeof b.model->concrete.id, "C25/30");
+    b.model->loads.thrust_area = KENT_AREA_INSIDE;
+    assert_says(&b, KENT_SI, "Concrete C25/30 of 25.0 MPa, slow cement.");
+    assert_says(&b, KENT_SI, "Thrusts on the bore, not the outside diameter.");
+    kent_build_clear(&b);
+}
+
 static void a_test_is_told_by_its_rule(void **state)
 {
     (void)state;
@@ -544,6 +568,7 @@ int main(void)
         cmocka_unit_test(a_valve_goes_from_its_opening_to_another),
         cmocka_unit_test(factors_are_told_one_by_one_only_where_they_differ),
         cmocka_unit_test(what_is_asked_of_pressures_is_told),
+        cmocka_unit_test(what_a_case_decides_of_loads_and_concrete_is_told),
         cmocka_unit_test(a_test_is_told_by_its_rule),
         cmocka_unit_test(a_large_main_is_counted_and_only_what_is_unusual_is_told),
         cmocka_unit_test(a_main_of_two_hundred_points_is_told_whole),

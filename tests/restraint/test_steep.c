@@ -169,6 +169,19 @@ static void what_would_hang_without_friction_is_told(void **state)
     done(&b, r);
 }
 
+/* A case that states its factor means it for these anchors too. */
+static void the_factor_is_the_case_s_where_it_states_one(void **state)
+{
+    (void)state;
+    kent_build b = falling(48.0);
+    b.model->loads.factor[KENT_CASE_STATIC] = 2.0;
+    kent_restraints *r = sized(&b);
+    const kent_steep *s = &r->pulls.steeps[0];
+    assert_close(s->factor, 2.0, 1e-12);
+    assert_close(s->anchor_force, 2.0 * s->along * s->spacing, 1e-9);
+    done(&b, r);
+}
+
 static void a_pipe_of_unknown_mass_is_said_to_be(void **state)
 {
     (void)state;
@@ -200,6 +213,7 @@ int main(void)
         cmocka_unit_test(friction_is_told_beside_and_not_counted),
         cmocka_unit_test(joints_that_hold_hang_on_the_upper_end),
         cmocka_unit_test(what_would_hang_without_friction_is_told),
+        cmocka_unit_test(the_factor_is_the_case_s_where_it_states_one),
         cmocka_unit_test(a_pipe_of_unknown_mass_is_said_to_be),
         cmocka_unit_test(a_short_riser_is_left_to_its_fittings),
     };
