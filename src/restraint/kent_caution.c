@@ -290,9 +290,12 @@ void kent_holding_caution(kent_holding_work *w, kent_holding *h)
                        "a turn of %s is within what the joint takes: listed, not held",
                        kent_said_of(KENT_ANGLE, w->m->units, w->fitting->angle).s);
     } else if (h->needs_nothing) {
-        kent_notes_add(&h->cautions,
-                       "no load case pushes with more than %s: nothing is needed",
-                       kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s);
+        const kent_role role = w->fitting->role;
+        const bool pulled =
+            role == KENT_ROLE_WALL || role == KENT_ROLE_FLANGE_ADAPTOR; /* told below */
+        kent_notes_add(&h->cautions, "no load case pushes with more than %s: %s",
+                       kent_said_of(KENT_FORCE, w->m->units, KENT_HOLDING_LEAST).s,
+                       pulled ? "no block is needed" : "nothing is needed");
     }
     caution_test_pressure(w, h);
     kent_other_ways_caution(w, h);

@@ -151,6 +151,8 @@ static void straight_pieces_are_listed_with_their_pull(void **state)
         assert_int_equal(kent_net_fitting(&n, "M")->type, KENT_STRAIGHT);
         assert_true(h->needs_nothing);
         kent_hand_expect(h, WORDS[k]);
+        kent_hand_expect(h, "no block is needed");
+        assert_false(kent_hand_says(h, "nothing is needed"));
         kent_restraints_free(r);
         kent_net_clear(&n);
     }
