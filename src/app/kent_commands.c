@@ -146,6 +146,9 @@ static kent_exit command_explain(kent_session *s)
         if (i > 0) kent_text_add(&text, "\n");
         status = kent_report_explain(s->results, fittings[i], &o, sink);
     }
+    if (!status && s->options->word_count == 0) {
+        status = kent_report_explain_along(s->results, &o, sink);
+    }
     code = kent_session_print_report(s, status, &text);
 done:
     kent_text_clear(&text);

@@ -70,6 +70,10 @@ kent_status kent_report_keys(kent_sink sink);
 kent_status kent_report_explain(const kent_results *r, int fitting,
                                 const kent_report_options *o, kent_sink sink);
 
+/* `explain`, of the whole case: string ends and steep stretches at no fitting. */
+kent_status kent_report_explain_along(const kent_results *r,
+                                      const kent_report_options *o, kent_sink sink);
+
 /* `cross-check`: the peaks of r and of a second opinion on each of its scenarios
  * ([scenario_count]) side by side. */
 kent_status kent_report_cross(const kent_results *r, const kent_opinion *opinions,
