@@ -246,14 +246,6 @@ void kent_holding_size(kent_holding_work *w, kent_holding *h)
 
 /* ---- restrained length ----------------------------------------------------------- */
 
-/* m needed over m restrained, of one leg; 1 where it ends otherwise than in plain pipe,
- * or is nil. */
-static double leg_use(const kent_leg *leg)
-{
-    const bool plain = leg->end == KENT_LEG_IN_GROUND && leg->length > 0.0;
-    return plain ? leg->length / leg->reach : 1.0;
-}
-
 /* Whether the legs hold the thrust, or the joints' part of it; *use: how much of what
  * they could, where they do. */
 static bool joints_hold(const kent_holding_work *w, const kent_holding *h,
@@ -266,7 +258,7 @@ static bool joints_hold(const kent_holding_work *w, const kent_holding *h,
     for (size_t i = 0; i < h->leg_count; i++) {
         if (!h->legs[i].fits) continue;
         fitting++;
-        *use = fmax(*use, leg_use(&h->legs[i]));
+        *use = fmax(*use, kent_leg_use(w->m, w->fitting, &h->legs[i]));
     }
     return wanted > 0 && (either ? fitting > 0 : fitting == wanted);
 }

@@ -161,6 +161,27 @@ unsigned kent_leg_measure(const kent_model *m, const kent_fitting *fitting,
     return lack;
 }
 
+double kent_leg_gives(const kent_model *m, const kent_fitting *fitting,
+                      const kent_leg *leg, double length)
+{
+    kent_leg_work work = {.factor = leg->factor,
+                          .bend = kent_leg_rule_of(m, fitting)->bend,
+                          .bears = leg->bears,
+                          .form = leg->form,
+                          .demand = INFINITY,
+                          .limit = length};
+    const kent_port *p = &m->ports[fitting->port_first + leg->port];
+    return kent_leg_pieces(m, fitting, p, &work) == 0 ? work.gives : NAN;
+}
+
+double kent_leg_use(const kent_model *m, const kent_fitting *fitting,
+                    const kent_leg *leg)
+{
+    if (leg->end != KENT_LEG_IN_GROUND || !(leg->length > 0.0)) return 1.0;
+    const double use = leg->demand / kent_leg_gives(m, fitting, leg, leg->reach);
+    return use < 1.0 ? use : 1.0; /* or not known */
+}
+
 unsigned kent_leg_prepare(const kent_model *m, const kent_standings *standings,
                           size_t index, size_t port, kent_vec3 thrust, double factor,
                           kent_leg_work *out)

@@ -139,6 +139,15 @@ unsigned kent_leg_prepare(const kent_model *m, const kent_standings *standings,
 unsigned kent_leg_measure(const kent_model *m, const kent_fitting *fitting,
                           const kent_port *port, kent_leg_work *w);
 
+/* N that the ground gives over the first `length` (m) of a leg as it was worked out;
+ * NAN: not known. */
+double kent_leg_gives(const kent_model *m, const kent_fitting *fitting,
+                      const kent_leg *leg, double length);
+/* Its demand over what the ground gives along all of it that is restrained, at most 1;
+ * 1 where it ends otherwise than in plain pipe, or is nil. */
+double kent_leg_use(const kent_model *m, const kent_fitting *fitting,
+                    const kent_leg *leg);
+
 /* ---- how far it may run ---------------------------------------------------------- */
 
 enum { KENT_LEG_RUNS = 8, KENT_LEG_PASSED = 8 };

@@ -50,14 +50,7 @@ static double gives_along(const kent_system_work *w, const kent_system_leg *leg,
                           double length)
 {
     const kent_fitting *f = &w->m->fittings[leg->fitting];
-    const kent_leg *own = own_leg(w, leg);
-    kent_leg_work work = {.factor = own->factor,
-                          .bend = kent_leg_rule_of(w->m, f)->bend,
-                          .bears = own->bears,
-                          .form = own->form,
-                          .demand = INFINITY,
-                          .limit = length};
-    return kent_leg_pieces(w->m, f, port_of(w, leg), &work) == 0 ? work.gives : NAN;
+    return kent_leg_gives(w->m, f, own_leg(w, leg), length);
 }
 
 /* ---- what a leg out of it must hold ---------------------------------------------- */
@@ -428,7 +421,7 @@ static bool tell_longer(const kent_system_work *w, const kent_system_leg *leg)
     const kent_leg *own = own_leg(w, leg);
     kent_holding *h = &w->r->fittings[leg->fitting];
     const kent_port *p = port_of(w, leg);
-    const double use = own->reach > 0.0 ? own->length / own->reach : 1.0;
+    const double use = kent_leg_use(w->m, &w->m->fittings[leg->fitting], own);
 
     h->restrained_length = fmax(h->restrained_length, own->length);
     kent_notes_add(&h->cautions,

@@ -494,6 +494,29 @@ static void every_line_over_parts_follows_from_those_above(void **state)
     }
 }
 
+/* A casing from half a metre beyond what the leg needs, before its whole pipe ends:
+ * that gives what till gives up to there, not its length's share. */
+static void a_casing_behind_the_length_adds_nothing_to_the_factor(void **state)
+{
+    (void)state;
+    kent_build plain = main_of_zones();
+    plain.model->pipes[0].laying_length = 6.0;
+    kent_restraints *r = sized(&plain);
+    const double needs = demand() / holds(&plain, TILL, 1.5, 0.6);
+    assert_close(at_c(&plain, r)->factor_reached, 1.5 * 6.0 / needs, 1e-9);
+    assert_true(needs + 0.5 < 6.0);
+    finish(&plain, r);
+
+    kent_build cased = main_of_zones();
+    cased.model->pipes[0].laying_length = 6.0;
+    zoned(&cased, 200.0 + needs + 0.5, 210.0, TILL)->casing = true;
+    r = sized(&cased);
+    assert_true(at_c(&cased, r)->held);
+    assert_close(at_c(&cased, r)->factor_reached, 1.5 * (needs + 0.5) / needs, 1e-6);
+    assert_close(at_c(&cased, r)->utilisation, needs / (needs + 0.5), 1e-6);
+    finish(&cased, r);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -503,6 +526,7 @@ int main(void)
         cmocka_unit_test(what_stands_near_a_restrained_bend_is_told),
         cmocka_unit_test(a_zone_of_the_same_ground_changes_nothing),
         cmocka_unit_test(a_leg_is_added_up_over_what_it_passes),
+        cmocka_unit_test(a_casing_behind_the_length_adds_nothing_to_the_factor),
         cmocka_unit_test(cover_and_water_of_a_zone_count_in_it),
         cmocka_unit_test(a_part_goes_by_the_least_cover_along_it),
         cmocka_unit_test(a_leg_is_as_weak_as_the_weakest_stop_within_it),
