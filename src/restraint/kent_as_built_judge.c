@@ -158,6 +158,11 @@ bool kent_as_built_judge(const kent_holding_work *w, const kent_holding *h,
                        metres(w, w->site.cover).s, metres(w, least).s);
     }
     judge_size(w, h, block, notes);
+    if (block->type == KENT_BLOCK_BEARING && built->face_width > 0.0) {
+        kent_notes_add(notes, "a face beside the block is given, and a bearing block "
+                              "has none but its own: it is not counted; say by block "
+                              "what was built");
+    }
     const bool leans = !faced || judge_ground(w, h, block, notes);
     if (kent_holding_above_ground(w) || kent_holding_in_casing(w)) {
         kent_notes_add(notes, "it stands %s, where a block has no ground to lean on",

@@ -325,6 +325,9 @@ static void rules_that_the_built_block_breaks_are_told(void **state)
          "face_width = \"1 m\"; face_height = \"0.7 m\"; face_thickness = \"0.5 m\";",
          "a gravity block is built where a bearing block was designed"},
         {"width = \"7 m\"; height = \"4 m\"; thickness = \"4 m\";", "more than the"},
+        {"width = \"2 m\"; height = \"1 m\"; thickness = \"0.9 m\"; face_width = "
+         "\"1 m\"; face_height = \"1 m\";",
+         "it is not counted; say by block"},
     };
     for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
         char more[600];
