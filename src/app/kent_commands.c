@@ -84,7 +84,8 @@ static kent_exit command_run(kent_session *s)
         (void)fprintf(stderr,
                       "kentledge: --strict: a limit is exceeded (a rating, a lowest "
                       "pressure, the vapour limit, a thin pipe pressed from "
-                      "outside, or a fitting that nothing holds)\n");
+                      "outside, a fitting that nothing holds, or one built with "
+                      "less than is asked)\n");
         return KENT_EXIT_LIMIT;
     }
     if (!s->results->incomplete) return code;

@@ -143,6 +143,30 @@ static void say_compared(kent_results *r)
     }
 }
 
+/* What was built is judged by its own command; a run must not pass it in silence. */
+static void judge_built(kent_results *r)
+{
+    const kent_restraints *held = r->restraints;
+    kent_text short_of = {0};
+    size_t count = 0;
+
+    for (size_t i = 0; held && i < held->fitting_count; i++) {
+        const kent_as_built *b = &held->fittings[i].as_built;
+        if (!b->stated || !b->falls_short) continue;
+        kent_text_add(&short_of, "%s%s", count++ > 0 ? ", " : "",
+                      r->model->fittings[i].id);
+    }
+    if (count > 0) {
+        r->limit_exceeded = true;
+        kent_notes_add(&r->cautions,
+                       "what was built at %s reaches less than is asked, or something "
+                       "of it cannot be told: see kentledge as-built",
+                       kent_text_of(&short_of));
+    }
+    r->cautions.failed = r->cautions.failed || short_of.failed;
+    kent_text_clear(&short_of);
+}
+
 void kent_limits_judge(kent_results *r)
 {
     say_compared(r);
@@ -156,4 +180,5 @@ void kent_limits_judge(kent_results *r)
         if (i == 0) judge_grid(r, &r->scenarios[i]);
     }
     if (r->restraints && r->restraints->not_held > 0) r->limit_exceeded = true;
+    judge_built(r);
 }

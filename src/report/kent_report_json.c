@@ -323,6 +323,7 @@ static json_t *face_of(const kent_block *b)
     kent_object_set(&o, "height_m", kent_json_real(b->face.height));
     kent_object_set(&o, "thickness_m", kent_json_real(b->face_thickness));
     kent_object_set(&o, "volume_m3", kent_json_real(b->face_volume));
+    kent_object_set(&o, "own_side", b->own_side ? json_true() : json_false());
     kent_object_set(&o, "utilisation", kent_json_real(b->face_utilisation));
     return kent_object_done(o);
 }

@@ -241,6 +241,10 @@ static void add_cell(sheet *s, kent_table *t, line_kind line, size_t soil, size_
             kent_table_cell(t, KENT_SHOWN_NONE);
             return;
         }
+        if (h->block.own_side) {
+            kent_table_cell(t, "own side");
+            return;
+        }
         add_sides(s, t, "", h->block.face.width, h->block.face.height,
                   h->block.face_thickness);
         return;

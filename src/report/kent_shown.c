@@ -397,6 +397,7 @@ kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
     if (left) return shown("none asked");
     if (!holding->held) return refusal(m, fitting, holding, room);
     if (holding->soil_beside) return shown("soil beside");
+    if (part->face && b->own_side) return shown("its own side");
     if (part->face) {
         const double sides[3] = {b->face.width, b->face.height, b->face_thickness};
         return three_sides("face ", sides, system, room);

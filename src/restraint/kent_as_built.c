@@ -1,5 +1,6 @@
 #include "kent_as_built_internal.h"
 #include "kent_said.h"
+#include "kent_stability_internal.h"
 
 #include <stdlib.h>
 #include <string.h>
@@ -179,6 +180,33 @@ static void built_blocks_reach(const kent_holding_work *w, kent_holding *h,
     }
 }
 
+/* Whether the body that was built stays in place, by the factors that the rules ask.
+ * Of a bearing block without a thickness its face alone tells, which is told above. */
+static void built_stands(const kent_holding_work *w, kent_holding *h,
+                         const kent_built *built, const kent_block *block)
+{
+    kent_holding_work work = *w; /* to be asked of another block */
+    kent_block face = *block;
+    kent_stability s;
+    char words[96];
+
+    if (h->needs_nothing) return;
+    if (isnan(block->volume)) {
+        if (block->type == KENT_BLOCK_BEARING) return;
+        kent_notes_add(&h->as_built.broken,
+                       "whether the block stays in place is not told: give its width, "
+                       "height and thickness");
+        h->as_built.falls_short = true;
+        return;
+    }
+    built_face(w, built, &face, &work.site);
+    kent_stability_find(&work, h, block, or_zero(built->axis_above), &s);
+    if (s.stands) return;
+    kent_stability_says(&s, words, sizeof words);
+    kent_notes_add(&h->as_built.broken, "the block does not stay in place: %s", words);
+    h->as_built.falls_short = true;
+}
+
 /* What was built, where the case does not say: what was designed, else a bearing block.
  */
 static kent_block_type built_type(const kent_holding *h, const kent_built *built)
@@ -196,6 +224,7 @@ static void find_block(const kent_holding_work *w, kent_holding *h,
     const kent_block block = built_block(w, built, type);
     h->as_built.volume = block.volume + block.face_volume;
     built_blocks_reach(w, h, built, block);
+    built_stands(w, h, built, &block);
     built_other_ways(w, h, &block);
     if (!kent_as_built_judge(w, h, built, &block, &h->as_built.broken)) {
         h->as_built.falls_short = true;

@@ -1,5 +1,6 @@
 #include "kent_block_internal.h"
 #include "kent_side_internal.h"
+#include "kent_stability.h"
 
 static const double DEEPEST = 6.0; /* m more of cover that anybody would dig */
 
@@ -212,6 +213,18 @@ static double bearing_concrete(const kent_block *b, const kent_site *site)
     return (b->width * b->height - site->hole) * b->thickness;
 }
 
+/* Whether the ground under a bearing block bears its weight (N) and what presses down,
+ * which rests on its back edge, or in its middle where the pipe passes through.
+ * source docs/theory/20-stability.md, 20.9, 20.10 */
+static bool footing_bears(const kent_site *site, const kent_block *b, double weight,
+                          double down)
+{
+    const double lever = site->hole > 0.0 ? 0.0 : 0.5 * b->thickness;
+    const kent_base_pressure p =
+        kent_base_pressure_of(weight + down, -lever * down, b->thickness, b->width);
+    return p.largest <= site->vertical;
+}
+
 /* Makes a bearing block of the face, if the block's own weight and footing do for what
  * little lifts or presses it. */
 static bool bearing_carries(const kent_rules *rules, const kent_site *site,
@@ -226,11 +239,12 @@ static bool bearing_carries(const kent_rules *rules, const kent_site *site,
     b.volume = b.width * b.height * b.thickness;
     const double base = kent_site_axis(site) + 0.5 * b.height;
     const double weight = kent_site_concrete(site, rules, base);
-    const double footing = b.width * b.thickness * site->vertical;
+    const double down = demand->load[KENT_DOWNWARD];
+    const double heavy = bearing_concrete(&b, site) * weight;
     b.submerged =
         demand->load[KENT_UPWARD] > 0.0 && weight < rules->concrete_unit_weight;
-    if (demand->load[KENT_UPWARD] > bearing_concrete(&b, site) * weight) return false;
-    if (demand->load[KENT_DOWNWARD] > footing) return false;
+    if (demand->load[KENT_UPWARD] > heavy) return false;
+    if (down > 0.0 && !footing_bears(site, &b, heavy, down)) return false;
     *out = b;
     return true;
 }
@@ -299,10 +313,10 @@ bool kent_block_widen(const kent_rules *rules, const kent_site *site,
     return true;
 }
 
-/* source docs/theory/10-blocks.md, 10.9 and 10.10; 20-stability.md, 20.13 */
-void kent_block_use_off(const kent_block *block, const kent_rules *rules,
-                        const kent_site *site, const kent_demand *demand,
-                        double axis_above, double use[KENT_SENSES])
+/* source docs/theory/10-blocks.md, 10.9 and 10.10 */
+void kent_block_use(const kent_block *block, const kent_rules *rules,
+                    const kent_site *site, const kent_demand *demand,
+                    double use[KENT_SENSES])
 {
     const double weight = rules->concrete_unit_weight -
                           (block->submerged ? rules->water_unit_weight : 0.0);
@@ -318,8 +332,7 @@ void kent_block_use_off(const kent_block *block, const kent_rules *rules,
         use[s] = 0.0;
     }
     if (demand->load[KENT_SIDEWAYS] > 0.0) {
-        const double bears = fmax(0.0, block->face.height - 2.0 * fabs(axis_above));
-        const double face = block->face.width * bears - site->hole;
+        const double face = block->face.width * block->face.height - site->hole;
         use[KENT_SIDEWAYS] =
             demand->load[KENT_SIDEWAYS] / (fmax(0.0, face) * site->allowable);
     }
@@ -329,11 +342,4 @@ void kent_block_use_off(const kent_block *block, const kent_rules *rules,
     if (demand->load[KENT_DOWNWARD] > 0.0) {
         use[KENT_DOWNWARD] = demand->load[KENT_DOWNWARD] / (plan * site->vertical);
     }
-}
-
-void kent_block_use(const kent_block *block, const kent_rules *rules,
-                    const kent_site *site, const kent_demand *demand,
-                    double use[KENT_SENSES])
-{
-    kent_block_use_off(block, rules, site, demand, 0.0, use);
 }

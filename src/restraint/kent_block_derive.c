@@ -92,7 +92,7 @@ static void derive_widened(kent_derivation *d, const kent_block *b, const char *
     kent_derivation_put(d, "n", (double)b->widened, KENT_RATIO, KENT_COMPUTED,
                         "steps by which it is enlarged until it stays in place");
     (void)snprintf(formula, sizeof formula, "%s + n*step", symbol);
-    kent_derivation_work(d, symbol, value, KENT_LENGTH, formula, "20.16", "enlarged");
+    kent_derivation_work(d, symbol, value, KENT_LENGTH, formula, "20.17", "enlarged");
 }
 
 static void derive_height_limit(const kent_holding_work *w, kent_derivation *d)
@@ -114,13 +114,7 @@ static void derive_sides(const kent_holding_work *w, kent_holding *h)
     const double axis = kent_site_axis(&w->site);
 
     derive_height_limit(w, d);
-    if (r->height_over_diameter > 0.0) {
-        rule(d, "ho", r->height_over_diameter, KENT_LENGTH,
-             "height over the pipe's diameter, at least");
-        kent_derivation_work(d, "hleast", w->site.diameter + r->height_over_diameter,
-                             KENT_LENGTH, "OD + ho", "21.12",
-                             "least height for this pipe");
-    }
+    if (r->height_over_diameter > 0.0) derive_least_height(w, d);
     rule(d, "rw", r->width_to_height[0], KENT_RATIO, "width over height, at least");
     rule(d, "rx", r->width_to_height[1], KENT_RATIO, "width over height, at most");
     kent_derivation_put(d, "h", face->height, KENT_LENGTH, KENT_COMPUTED,

@@ -141,10 +141,4 @@ void kent_block_use(const kent_block *block, const kent_rules *rules,
 bool kent_block_side_bears(const kent_rules *rules, const kent_site *site,
                            kent_block *out);
 
-/* The same of a block as built, its face's centre below the pipe's axis by axis_above
- * (m, negative: above it): less of the face bears. source 20.13 */
-void kent_block_use_off(const kent_block *block, const kent_rules *rules,
-                        const kent_site *site, const kent_demand *demand,
-                        double axis_above, double use[KENT_SENSES]);
-
 #endif

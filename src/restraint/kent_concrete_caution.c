@@ -10,13 +10,14 @@ static void caution_pressed(const kent_holding_work *w, kent_holding *h)
     const kent_system units = w->m->units;
 
     if (!c->pressed) {
-        if (!(c->load > 0.0)) return;
+        const bool through = w->site.hole > 0.0;
+        const bool collar = through && w->demand.load[KENT_SIDEWAYS] > 0.0;
+        if (collar || !(c->load > 0.0)) return; /* said with what it hands over */
         kent_notes_add(&h->cautions,
                        "%s a flange or ring on it must press on %s of its concrete, or "
                        "more; state it as contact_area",
-                       w->site.hole > 0.0
-                           ? "the pipe passes through the block:"
-                           : "what a valve presses on its block with is not known:",
+                       through ? "the pipe passes through the block:"
+                               : "what a valve presses on its block with is not known:",
                        kent_said_of(KENT_AREA, units, c->contact_needed).s);
         return;
     }

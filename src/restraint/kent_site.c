@@ -26,7 +26,7 @@ double kent_rules_cover(const kent_rules *rules, double diameter)
                  : rules->least_cover;
 }
 
-/* source docs/theory/21-ground.md, 21.12 */
+/* source docs/theory/10-blocks.md, 10.34 */
 double kent_rules_height(const kent_rules *rules, double diameter)
 {
     const double over = rules->height_over_diameter;

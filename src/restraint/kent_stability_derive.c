@@ -65,7 +65,6 @@ static void derive_body(const kent_holding_work *w, kent_holding *h,
                          KENT_FORCE, wet ? "Vc*(gc - gw) + S" : "Vc*gc + S", "20.7",
                          wet ? "weight, less the water's" : "weight");
     found(d, "ha", body->axis, KENT_LENGTH, "pipe axis above the foot");
-    found(d, "hf", body->centre, KENT_LENGTH, "centre of the face above the foot");
     found(d, "x", body->upright, KENT_LENGTH,
           "from the toe to where what lifts or presses acts");
 }
@@ -101,7 +100,7 @@ static void derive_asked(kent_derivation *d, const kent_stand *at)
 {
     if (!(at->asked > 0.0)) return;
     kent_derivation_put(d, "SFa", at->asked, KENT_RATIO, KENT_CATALOGUE,
-                        "asked, no more than the case's own factor (20.16)");
+                        "asked, of a case with its factor (20.16)");
 }
 
 static void derive_sliding(const kent_holding_work *w, kent_holding *h,
@@ -139,7 +138,7 @@ static void derive_overturning(const kent_holding_work *w, kent_holding *h,
 
     (void)derive_push(w, h, body, at, "Overturning");
     kent_derivation_work(d, "SFo", at->reached, KENT_RATIO,
-                         "(W*L/2 + D*x + P*hf)/(H*ha + U*x)", "20.8",
+                         "(W*L/2 + D*x + P*ha)/(H*ha + U*x)", "20.8",
                          "factor against overturning about the toe");
     derive_asked(d, at);
 }
@@ -153,7 +152,7 @@ static void derive_pressure(const kent_holding_work *w, kent_holding *h,
     kent_derivation_put(d, "qv", w->site.vertical, KENT_STRESS,
                         kent_soil_source(w->soil), "bearing under a base");
     kent_derivation_work(d, "M", p.moment, KENT_MOMENT,
-                         "H*ha - min(H, P)*hf + (D - U)*(L/2 - x)", "20.8",
+                         "(H - min(H, P))*ha + (D - U)*(L/2 - x)", "20.8",
                          "about the middle of the base");
     kent_derivation_work(d, "e", p.base.eccentricity, KENT_LENGTH, "M/N", "20.9",
                          "eccentricity");
@@ -307,6 +306,31 @@ static void caution_unknown(const kent_holding_work *w, kent_holding *h)
     }
 }
 
+/* What hands the thrust of a pipe that passes through over to the block, and how much
+ * of its concrete that must press on, where no contact_area is stated. */
+static void caution_collar(const kent_holding_work *w, kent_holding *h)
+{
+    const kent_concrete_check *c = &h->concrete;
+    const kent_system units = w->m->units;
+    const double sideways = w->demand.load[KENT_SIDEWAYS];
+    kent_text t = {0};
+
+    if (!(w->site.hole > 0.0) || !(sideways > 0.0)) return;
+    kent_text_add(&t,
+                  "the block embraces the pipe and bears on both ends of the trench: a "
+                  "collar or flange cast into it must hand over %s, either way",
+                  kent_said_of(KENT_FORCE, units, sideways).s);
+    if (!c->pressed && c->contact_needed > 0.0) {
+        kent_text_add(&t,
+                      ", and press on %s of its concrete, or more, which is to be "
+                      "stated as contact_area",
+                      kent_said_of(KENT_AREA, units, c->contact_needed).s);
+    }
+    kent_notes_add(&h->cautions, "%s", kent_text_of(&t));
+    h->cautions.failed = h->cautions.failed || t.failed;
+    kent_text_clear(&t);
+}
+
 void kent_stability_caution(const kent_holding_work *w, kent_holding *h)
 {
     const kent_stability *s = &h->stability;
@@ -329,11 +353,5 @@ void kent_stability_caution(const kent_holding_work *w, kent_holding *h)
         kent_notes_add(&h->cautions, "the weight is of concrete alone: where the block "
                                      "encloses the pipe, it grows by the pipe's room");
     }
-    if (w->site.hole > 0.0 && w->demand.load[KENT_SIDEWAYS] > 0.0) {
-        kent_notes_add(
-            &h->cautions,
-            "the block embraces the pipe and bears on both ends of the trench: a "
-            "collar or flange cast into it must hand over %s, either way",
-            kent_said_of(KENT_FORCE, w->m->units, w->demand.load[KENT_SIDEWAYS]).s);
-    }
+    caution_collar(w, h);
 }

@@ -8,7 +8,6 @@
 typedef struct kent_body {
     double length, breadth, height; /* m: along the level thrust, across it, high */
     double axis;                    /* m, of the pipe above the foot */
-    double centre;                  /* m, of the face above the foot */
     double upright;               /* m from the toe, where what lifts or presses acts */
     double foot;                  /* m below ground; NAN: no cover is stated */
     double concrete, unit_weight; /* m3, N/m3, the latter less water's where wet */

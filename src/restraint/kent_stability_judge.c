@@ -11,11 +11,14 @@ static const double SLACK = 1e-5; /* as sides of steps may be short of an area *
 
 /* ---- the body -------------------------------------------------------------------- */
 
-/* N that the face may bear, its hole left out. */
-static double face_bears(const kent_holding_work *w, const kent_block *b)
+/* N that the face may bear, its hole left out: what of it is centred on the axis.
+ * source docs/theory/25-as-built.md, 25.2 */
+static double face_bears(const kent_holding_work *w, const kent_block *b,
+                         double axis_above)
 {
     const bool face = b->type == KENT_BLOCK_BEARING || b->has_face;
-    const double area = b->face.width * b->face.height - w->site.hole;
+    const double part = kent_built_share(b->face.height, axis_above);
+    const double area = b->face.width * b->face.height * part - w->site.hole;
     return face && area > 0.0 && w->site.allowable > 0.0 ? area * w->site.allowable
                                                          : 0.0;
 }
@@ -32,13 +35,12 @@ kent_body kent_body_of(const kent_holding_work *w, const kent_block *b,
         .breadth = base ? fmax(b->width, b->height) : b->width,
         .height = base ? b->thickness : b->height,
         .concrete = b->volume - (bearing ? site->hole * b->thickness : 0.0),
-        .face = face_bears(w, b),
+        .face = face_bears(w, b, axis_above),
     };
     const bool own = bearing || b->own_side; /* the face is the body's own */
 
     body.axis = base ? body.height + 0.5 * site->diameter
                      : 0.5 * body.height + (own ? axis_above : 0.0);
-    body.centre = body.axis - axis_above;
     body.foot = kent_site_axis(site) + body.axis;
     body.upright = bearing && !(site->hole > 0.0) ? body.length : 0.5 * body.length;
     body.unit_weight = kent_site_concrete(site, rules, body.foot);
@@ -59,9 +61,9 @@ kent_push kent_push_on(const kent_body *body, const kent_soil *soil, double side
 
     p.face = body->face * fmax(1.0, increase);
     p.normal = weight + down - up;
-    p.steadies = weight * half + down * body->upright + p.face * body->centre;
+    p.steadies = weight * half + down * body->upright + p.face * body->axis;
     p.topples = sideways * body->axis + up * body->upright;
-    p.moment = sideways * body->axis - fmin(sideways, p.face) * body->centre +
+    p.moment = (sideways - fmin(sideways, p.face)) * body->axis +
                (down - up) * (half - body->upright);
     if (!(p.normal > 0.0)) return p;
     p.base = kent_base_pressure_of(p.normal, p.moment, body->length, body->breadth);
@@ -130,15 +132,23 @@ static bool take_least(kent_stand *least, kent_stand found)
 /* source docs/theory/20-stability.md, 20.16 */
 static double asked_of(const kent_rules *rules, const kent_load_case *c, double usual)
 {
-    const bool test = c->kind == KENT_CASE_TEST && rules->factor_stability_test > 0.0;
-    const double asked = test ? rules->factor_stability_test : usual;
-    return fmin(asked, c->safety_factor);
+    const bool test = c->kind == KENT_CASE_TEST;
+    const bool own = test && rules->factor_stability_test > 0.0;
+    const double asked = own ? rules->factor_stability_test : usual;
+    const double beside =
+        test && !isnan(rules->factor_test) ? rules->factor_test : rules->safety_factor;
+    return fmin(asked, c->safety_factor * fmax(1.0, asked / beside));
 }
 
-static double pressure_asked(const kent_rules *rules, const kent_block *b)
+/* A bearing block weighs about what the ground did that it replaces: it is asked for
+ * what more it carries alone. */
+static double pressure_asked(const kent_holding_work *w, const kent_block *b)
 {
+    const kent_rules *rules = &w->m->rules;
+    const bool carries =
+        b->type != KENT_BLOCK_BEARING || w->demand.load[KENT_DOWNWARD] > 0.0;
     const bool asks = rules->factor_sliding > 0.0 || rules->factor_overturning > 0.0;
-    return asks && b->type != KENT_BLOCK_BEARING ? 1.0 : 0.0;
+    return asks && carries ? 1.0 : 0.0;
 }
 
 static void judge_push(const kent_holding_work *w, const kent_block *b,
@@ -156,7 +166,7 @@ static void judge_push(const kent_holding_work *w, const kent_block *b,
     it.reached = kent_overturning_factor(p->steadies, p->topples);
     (void)take_least(&out->overturning[hour], it);
     if (!(p->normal > 0.0)) return;
-    it.asked = pressure_asked(rules, b);
+    it.asked = pressure_asked(w, b);
     it.reached = w->site.vertical * fmax(1.0, c->increase) / p->base.largest;
     if (take_least(&out->pressure[hour], it)) out->base[hour] = p->base;
 }
@@ -193,7 +203,7 @@ static void judge_rest(const kent_holding_work *w, const kent_block *b,
     const kent_push p = kent_push_on(body, w->soil, 0.0, 0.0, 0.0, 1.0);
     const kent_stand rest = {
         .reached = w->site.vertical / p.base.largest,
-        .asked = pressure_asked(&w->m->rules, b),
+        .asked = pressure_asked(w, b),
         .load_case = -1,
     };
     if (take_least(&out->pressure[KENT_AT_WORK], rest)) {

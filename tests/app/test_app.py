@@ -446,6 +446,9 @@ class App(unittest.TestCase):
         self.assertEqual(one.returncode, 0)
         self.assertNotIn("PI1, bend", one.stdout)
         short = self.call("as-built", case, "--strict")
+        passed = self.call("run", case, "--strict", "--no-files")
+        self.assertEqual(passed.returncode, 3)
+        self.assertIn("what was built at PI1, E reaches less", passed.stdout)
         self.assertEqual((short.returncode, short.stdout), (3, r.stdout))
         self.assertIn("2 of the fittings built reach less", short.stderr)
         rows = list(csv.DictReader(io.StringIO(

@@ -303,6 +303,46 @@ static void ground_that_may_not_be_leant_on_holds_nothing(void **state)
     let_go(&w);
 }
 
+/* A weight that outweighs the lift by half again, where the rules ask 2.5 against
+ * turning over; and one whose height nobody measured. */
+static void a_built_body_that_does_not_stay_in_place_is_told(void **state)
+{
+    (void)state;
+    static const char FACTOR[] = "design_rules = { factor_overturning = 2.5; };\n";
+    static const char SMALL[] = "block = \"gravity\"; width = \"2.2 m\"; height = "
+                                "\"0.9 m\"; thickness = \"2.2 m\";";
+    static const char LARGE[] = "block = \"gravity\"; width = \"2.7 m\"; height = "
+                                "\"0.9 m\"; thickness = \"2.7 m\";";
+    static const struct {
+        const char *rules, *built, *says;
+    } ROWS[] = {{"", SMALL, NULL},
+                {FACTOR, SMALL, "does not stay in place: overturning"},
+                {FACTOR, LARGE, NULL},
+                {"", "width = \"2.2 m\"; height = \"0.9 m\";",
+                 "whether the block stays in place is not told"}};
+    for (size_t i = 0; i < sizeof ROWS / sizeof ROWS[0]; i++) {
+        char more[700];
+        (void)snprintf(more, sizeof more,
+                       TEST_AT("8 bar") "%sas_built = ( { fitting = \"F\"; %s } );\n",
+                       ROWS[i].rules, ROWS[i].built);
+        char *text = main_with("angle = \"60 deg\"; orientation = \"crest\";",
+                               "allowable_bearing = \"90 kPa\"; vertical_bearing = "
+                               "\"120 kPa\";",
+                               more);
+        worked w = work_out(text);
+        const kent_as_built *b = &holding(&w, "F")->as_built;
+        if (ROWS[i].says) {
+            if (!says(b, ROWS[i].says)) fail_msg("nothing said of %s", ROWS[i].says);
+            assert_true(b->falls_short);
+        } else {
+            assert_false(says(b, "in place"));
+        }
+        assert_int_equal(w.results->limit_exceeded, b->falls_short);
+        free(text);
+        let_go(&w);
+    }
+}
+
 /* ---- rules that are broken ------------------------------------------------------- */
 
 static void rules_that_the_built_block_breaks_are_told(void **state)
@@ -354,6 +394,7 @@ int main(void)
         cmocka_unit_test(a_leg_that_was_left_out_holds_nothing),
         cmocka_unit_test(a_leg_counts_up_to_what_breaks_it),
         cmocka_unit_test(ground_that_may_not_be_leant_on_holds_nothing),
+        cmocka_unit_test(a_built_body_that_does_not_stay_in_place_is_told),
         cmocka_unit_test(rules_that_the_built_block_breaks_are_told),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -394,6 +394,32 @@ static void test_and_work_have_factors_of_their_own(void **state)
     done(&b, r);
 }
 
+/* Rules that ask for more than their own factor on the thrust have it in full, and of a
+ * case with a smaller factor its share: 2.5 beside 1.5 is 1.83 beside 1.1. */
+static void more_than_the_cases_factor_is_asked_where_the_rules_say_so(void **state)
+{
+    (void)state;
+    static const kent_hand_case cases[] = {{"test", KENT_CASE_TEST, 1.5, 0.6e6},
+                                           {"static", KENT_CASE_STATIC, 1.5, 1.0e6},
+                                           {"shut", KENT_CASE_OCCASIONAL, 1.1, 1.4e6}};
+    for (int k = 0; k < 2; k++) {
+        kent_build b = main_that_turns(0.0, rise_of(5.625));
+        b.model->rules.factor_overturning = 2.5;
+        b.model->rules.factor_stability_test = 1.6;
+        kent_build_derive(&b);
+        kent_restraints *r = kent_hand_size(&b, cases, k == 0 ? 2 : 3);
+        const kent_holding *h = at_b(&b, r);
+        const kent_stand *work = &h->stability.overturning[KENT_AT_WORK];
+
+        assert_true(h->held && h->block.widened > 0);
+        assert_int_equal(work->load_case, k == 0 ? 1 : 2);
+        assert_close(work->asked, k == 0 ? 2.5 : 1.1 * 2.5 / 1.5, 1e-12);
+        assert_true(work->reached >= work->asked * (1.0 - 1e-5));
+        assert_close(h->stability.overturning[KENT_AT_TEST].asked, 1.6, 1e-12);
+        done(&b, r);
+    }
+}
+
 /* Water to the surface; 0.62 m of pipe of 10 mm displace 0.3019 m2. By hand. */
 static void a_wet_block_and_its_empty_main_float_or_do_not(void **state)
 {
@@ -490,6 +516,37 @@ static void a_block_is_taller_than_the_pipe_where_that_is_asked(void **state)
     done(&b, r);
 }
 
+/* A sag that turns: what presses down stands on the back edge of a block behind the
+ * face, 1.5 D there and W in its middle press on a triangle of 3 (L/2 - e), which
+ * little more than plain W does not. It gets a base; a flatter one keeps its single
+ * block. */
+static void what_presses_on_the_back_edge_is_carried_by_the_ground(void **state)
+{
+    (void)state;
+    static const double degrees[] = {0.4, 2.5};
+    for (int k = 0; k < 2; k++) {
+        kent_build b = main_that_turns(20.0 * DEGREE, -rise_of(degrees[k]));
+        b.model->rules.factor_sliding = b.model->rules.factor_overturning = 1.5;
+        kent_restraints *r = sized(&b);
+        const kent_holding *h = at_b(&b, r);
+        const kent_stand *test = &h->stability.pressure[KENT_AT_TEST];
+
+        assert_true(h->held);
+        assert_int_equal(h->block.type, k ? KENT_BLOCK_BASE : KENT_BLOCK_BEARING);
+        assert_close(test->asked, 1.0, 1e-12);
+        assert_true(test->reached >= 1.0);
+        if (k == 0) {
+            const double down = 2.0e6 * 0.25 * PI * 0.62 * 0.62 * sin(0.4 * DEGREE);
+            const double weight = h->block.volume * 23e3, n = weight + down;
+            const double l = h->block.thickness, e = 0.5 * down * l / n;
+            const double p = e > l / 6.0 ? 2.0 * n / (3.0 * (0.5 * l - e))
+                                         : n / l * (1.0 + 6.0 * e / l);
+            assert_close(test->reached, 150e3 * h->block.width / p, 1e-3);
+        }
+        done(&b, r);
+    }
+}
+
 /* Bearing block of a plan bend: face first, centred, so that the base presses evenly.
  */
 static void a_face_on_the_axis_makes_no_moment(void **state)
@@ -527,7 +584,8 @@ static void an_anchor_block_says_what_its_collar_hands_over(void **state)
     const kent_holding *h = at_b(&b, r);
 
     assert_int_equal(h->chosen, KENT_ANCHOR_BLOCK);
-    kent_hand_expect(h, "collar or flange cast into it must hand over 245.0 kN");
+    kent_hand_expect(h, "collar or flange cast into it must hand over 245.0 kN, either "
+                        "way, and press on");
     done(&b, r);
 }
 
@@ -576,11 +634,13 @@ int main(void)
         cmocka_unit_test(the_side_of_a_weight_is_its_face_where_it_serves),
         cmocka_unit_test(friction_under_a_weight_adds_to_its_face),
         cmocka_unit_test(test_and_work_have_factors_of_their_own),
+        cmocka_unit_test(more_than_the_cases_factor_is_asked_where_the_rules_say_so),
         cmocka_unit_test(a_wet_block_and_its_empty_main_float_or_do_not),
         cmocka_unit_test(a_weight_that_would_float_is_enlarged),
         cmocka_unit_test(an_empty_main_over_its_base_is_cautioned),
         cmocka_unit_test(a_base_carries_its_weight_and_the_thrust),
         cmocka_unit_test(a_block_is_taller_than_the_pipe_where_that_is_asked),
+        cmocka_unit_test(what_presses_on_the_back_edge_is_carried_by_the_ground),
         cmocka_unit_test(a_face_on_the_axis_makes_no_moment),
         cmocka_unit_test(an_anchor_block_says_what_its_collar_hands_over),
         cmocka_unit_test(more_pressure_never_makes_a_smaller_block),
