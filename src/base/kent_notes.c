@@ -44,15 +44,20 @@ static int make_room(kent_notes *n)
     }
     if (kent_grow(&array, &n->capacity, n->count + 1, sizeof *n->text) != 0) return -1;
     n->text = array;
+    array = n->grave;
+    if (kent_grow(&array, &n->grave_capacity, n->count + 1, sizeof *n->grave) != 0) {
+        return -1;
+    }
+    n->grave = array;
     return 0;
 }
 
-void kent_notes_add(kent_notes *n, const char *fmt, ...)
+__attribute__((format(printf, 3, 0))) static void
+notes_put(kent_notes *n, bool grave, const char *fmt, va_list args)
 {
     char *text = NULL;
-    va_list measure, args;
+    va_list measure;
 
-    va_start(args, fmt);
     va_copy(measure, args);
     const int length = vsnprintf(NULL, 0, fmt, measure);
     va_end(measure);
@@ -63,7 +68,11 @@ void kent_notes_add(kent_notes *n, const char *fmt, ...)
 
     if (make_room(n) != 0) goto lost;
     size_t *slot = slot_of(n, text);
-    if (*slot != 0) goto done; /* it stands there already */
+    if (*slot != 0) { /* it stands there already */
+        n->grave[*slot - 1] |= grave;
+        goto done;
+    }
+    n->grave[n->count] = grave;
     n->text[n->count++] = text;
     *slot = n->count;
     text = NULL; /* handed over */
@@ -71,8 +80,25 @@ void kent_notes_add(kent_notes *n, const char *fmt, ...)
 lost:
     n->failed = true;
 done:
-    va_end(args);
     free(text);
+}
+
+void kent_notes_add(kent_notes *n, const char *fmt, ...)
+{
+    va_list args;
+
+    va_start(args, fmt);
+    notes_put(n, false, fmt, args);
+    va_end(args);
+}
+
+void kent_notes_warn(kent_notes *n, const char *fmt, ...)
+{
+    va_list args;
+
+    va_start(args, fmt);
+    notes_put(n, true, fmt, args);
+    va_end(args);
 }
 
 void kent_notes_clear(kent_notes *n)
@@ -81,6 +107,7 @@ void kent_notes_clear(kent_notes *n)
         free(n->text[i]);
     }
     free(n->text);
+    free(n->grave);
     free(n->slots);
     *n = (kent_notes){0};
 }

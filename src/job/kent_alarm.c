@@ -378,12 +378,12 @@ static void test_below_still_water(const watch *w)
     const double test = kent_site_test_find(m, w->steadies, NULL).pressure;
     const double still = kent_model_pressure(m, still_level(m), m->points[gauge].at.z);
     if (!(test < still)) return; /* NaN: no test, or no still water */
-    kent_notes_add(w->cautions,
-                   "the site test, %s at %s, is below the pressure of still water, "
-                   "which brought to that level is %s: a gauge elsewhere, or a wrong "
-                   "unit?",
-                   kent_said_of(KENT_PRESSURE, m->units, test).s, m->points[gauge].id,
-                   kent_said_of(KENT_PRESSURE, m->units, still).s);
+    kent_notes_warn(w->cautions,
+                    "the site test, %s at %s, is below the pressure of still water, "
+                    "which brought to that level is %s: a gauge elsewhere, or a wrong "
+                    "unit?",
+                    kent_said_of(KENT_PRESSURE, m->units, test).s, m->points[gauge].id,
+                    kent_said_of(KENT_PRESSURE, m->units, still).s);
 }
 
 /* A level of still water of the case's own presses less than its reservoirs do. */
@@ -392,7 +392,7 @@ static void still_water_below_its_levels(const watch *w)
     const kent_model *m = w->m;
     const double level = highest_level(m);
     if (!(m->loads.static_level < level)) return; /* NAN: none is given */
-    kent_notes_add(
+    kent_notes_warn(
         w->cautions,
         "static_level, %s, is below the highest water level of the case, %s: "
         "a main at rest is pressed harder than the case 'static' says",

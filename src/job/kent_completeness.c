@@ -84,10 +84,10 @@ void kent_completeness_judge(kent_results *r)
                            n->waived);
         } else {
             r->incomplete = true;
-            kent_notes_add(&r->cautions,
-                           "not complete: %s, or say why not by waived = ( ( \"%s\", "
-                           "\"...\" ) ) in loads",
-                           ASKED[k].missing, n->what);
+            kent_notes_warn(&r->cautions,
+                            "not complete: %s, or say why not by waived = ( ( \"%s\", "
+                            "\"...\" ) ) in loads",
+                            ASKED[k].missing, n->what);
         }
     }
 }
@@ -145,7 +145,7 @@ void kent_completeness_test(kent_results *r)
     const kent_scenario_result *run = &r->scenarios[most.march];
     const kent_name name =
         kent_name_in_state(m, m->scenarios[run->scenario].id, run->state);
-    kent_notes_add(
+    kent_notes_warn(
         &r->cautions,
         "the site test is below the surge: %s reaches %s in pipe %s, %s from "
         "its start, where the test brings %s; it does not prove the main and "

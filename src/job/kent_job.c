@@ -202,7 +202,11 @@ unsigned kent_job_threads(unsigned asked)
 static void copy_notes(const kent_notes *from, kent_notes *to)
 {
     for (size_t i = 0; i < from->count; i++) {
-        kent_notes_add(to, "%s", from->text[i]);
+        if (from->grave[i]) {
+            kent_notes_warn(to, "%s", from->text[i]);
+        } else {
+            kent_notes_add(to, "%s", from->text[i]);
+        }
     }
 }
 

@@ -95,7 +95,7 @@ static void say_passed(kent_results *r, const kent_limit *l)
     add_place(m, l, &words);
     kent_text_add(&words, " in %s, ", l->when.s);
     add_asked(m, l, &words);
-    kent_notes_add(&r->cautions, "%s", kent_text_of(&words));
+    kent_notes_warn(&r->cautions, "%s", kent_text_of(&words));
     r->cautions.failed = r->cautions.failed || words.failed;
     kent_text_clear(&words);
 }
@@ -111,8 +111,8 @@ static void say_rest(kent_results *r, const kent_limit *l, size_t passed)
         [KENT_LIMIT_COLLAPSE] = "pipes are pressed beyond an unsupported ring",
     };
     if (passed <= NAMED) return;
-    kent_notes_add(&r->cautions, "%zu more %s in %s", passed - NAMED, WHAT[l->kind],
-                   l->when.s);
+    kent_notes_warn(&r->cautions, "%zu more %s in %s", passed - NAMED, WHAT[l->kind],
+                    l->when.s);
 }
 
 /* ---- the cases ------------------------------------------------------------------- */

@@ -109,11 +109,11 @@ static void judge_run(kent_results *r, const kent_scenario_result *run)
         kent_text_add(&closes, "when one closes the head rises by up to %s",
                       kent_said_of(KENT_LENGTH, m->units, pulse).s);
     }
-    kent_notes_add(&r->cautions,
-                   "%s: the water parts%s; the largest cavity takes %s, at %.3g s; %s",
-                   name_of(m, run).s, kent_text_of(&where),
-                   kent_parting_volume(m->units, c->largest).s, c->largest_at,
-                   kent_text_of(&closes));
+    kent_notes_warn(&r->cautions,
+                    "%s: the water parts%s; the largest cavity takes %s, at %.3g s; %s",
+                    name_of(m, run).s, kent_text_of(&where),
+                    kent_parting_volume(m->units, c->largest).s, c->largest_at,
+                    kent_text_of(&closes));
     r->cautions.failed = r->cautions.failed || where.failed || closes.failed;
     kent_text_clear(&where);
     kent_text_clear(&closes);
@@ -126,7 +126,7 @@ static void caution_parted(kent_results *r, const kent_scenario_result *run)
         const int point = m->fittings[i].point;
         kent_notes *cautions = &r->restraints->fittings[i].cautions;
         if (point < 0 || !(run->hollow[point] > 0.0)) continue;
-        kent_notes_add(
+        kent_notes_warn(
             cautions, "%s: the water parts at or next to it: a cavity of up to %s",
             name_of(m, run).s, kent_parting_volume(m->units, run->hollow[point]).s);
         r->cautions.failed = r->cautions.failed || cautions->failed;
@@ -167,7 +167,7 @@ static void caution_pulse(kent_results *r, const kent_scenario_result *run)
                            "it stays above 90 %% of itself for %.3f s, and ",
                            c->above_90_percent);
         }
-        kent_notes_add(
+        kent_notes_warn(
             cautions,
             "the governing peak, '%s' at %.4g s, comes after a cavity closed "
             "(the first at %.4g s): %ssuch peaks hang on how cavities are "

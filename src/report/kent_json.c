@@ -115,3 +115,12 @@ json_t *kent_json_notes(const kent_notes *notes)
     }
     return kent_object_done(list);
 }
+
+json_t *kent_json_grave(const kent_notes *notes)
+{
+    kent_object list = kent_list_new();
+    for (size_t i = 0; i < notes->count; i++) {
+        if (notes->grave[i]) kent_list_append(&list, kent_json_words(notes->text[i]));
+    }
+    return kent_object_done(list);
+}

@@ -31,6 +31,7 @@ json_t *kent_json_count(size_t value);
 json_t *kent_json_words(const char *text);
 json_t *kent_json_vector(kent_vec3 v); /* [x, y, z]; null where it is not known */
 json_t *kent_json_notes(const kent_notes *notes);
+json_t *kent_json_grave(const kent_notes *notes); /* of what is unsafe as it stands */
 
 /* An object under construction; made false by the first value that could not be. */
 typedef struct kent_object {
@@ -57,6 +58,9 @@ void kent_json_put_runs(kent_writer *w);
 /* Of a fitting; null without a block. Quantities also of all together. */
 json_t *kent_json_concrete(const kent_concrete_check *c);
 json_t *kent_json_quantities(const kent_quantities *q);
+
+/* Block and joints side by side; null where nothing is to be held. */
+json_t *kent_json_either(const kent_either *e);
 
 /* A list: systems of restrained lengths. */
 void kent_json_put_systems(kent_writer *w);

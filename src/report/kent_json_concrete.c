@@ -53,3 +53,30 @@ json_t *kent_json_quantities(const kent_quantities *q)
     kent_object_set(&o, "formed_m2", kent_json_real(q->formed));
     return kent_object_done(o);
 }
+
+static json_t *sides_of(const kent_block *b)
+{
+    if (b->type == KENT_BLOCK_NONE) return json_null();
+    kent_object o = kent_object_new();
+    kent_object_set(&o, "type", kent_json_words(kent_block_word(b->type)));
+    kent_object_set(&o, "width_m", kent_json_real(b->width));
+    kent_object_set(&o, "height_m", kent_json_real(b->height));
+    kent_object_set(&o, "thickness_m", kent_json_real(b->thickness));
+    kent_object_set(&o, "volume_m3", kent_json_real(b->volume));
+    kent_object_set(&o, "face_volume_m3", kent_json_real(b->face_volume));
+    return kent_object_done(o);
+}
+
+json_t *kent_json_either(const kent_either *e)
+{
+    if (!e->looked_at) return json_null();
+    kent_object o = kent_object_new();
+    kent_object_set(&o, "block", sides_of(&e->block));
+    kent_object_set(&o, "quantities", kent_json_quantities(&e->quantities));
+    kent_object_set(&o, "no_block",
+                    e->no_block ? kent_json_words(e->no_block) : json_null());
+    kent_object_set(&o, "joints_hold", json_boolean(e->joints));
+    kent_object_set(&o, "no_length",
+                    e->no_length ? kent_json_words(e->no_length) : json_null());
+    return kent_object_done(o);
+}

@@ -67,6 +67,7 @@ static json_t *system_of(const kent_model *m, const kent_systems *s, size_t inde
     kent_object o = kent_object_new();
 
     kent_object_set(&o, "id", kent_json_words(m->fittings[first].id));
+    kent_object_set(&o, "number", kent_json_count(index + 1));
     kent_object_set(&o, "fittings", fittings_of(m, s, system));
     kent_object_set(&o, "stretches", stretches_of(m, s, system));
     kent_object_set(&o, "legs_out", outers_of(m, s, system));

@@ -21,6 +21,7 @@ typedef struct kent_page {
     size_t limit; /* columns of a line; 0: none */
     kent_listing listing;
     char (*letter)[4]; /* [fitting_count] of its note; "" none */
+    size_t *system;    /* [fitting_count] 1 .. of its restrained system; 0 none */
     bool cut;          /* a name was cut short */
     kent_text *out;
 } kent_page;
@@ -31,6 +32,10 @@ void kent_page_finish(kent_page *page, const char *heading, kent_table *t);
 /* A paragraph; words is let go. */
 void kent_page_say(kent_page *page, const char *lead, kent_text *words);
 
+void kent_page_cautions(kent_page *page);  /* the unsafe first, alike ones as one */
+void kent_page_either(kent_page *page);    /* block and joints side by side */
+void kent_page_systems(kent_page *page);   /* restrained pipe; who is near whom */
+void kent_page_pulls(kent_page *page);     /* at ends of strings, down steep ground */
 void kent_page_limits(kent_page *page);    /* what was reached against what is asked */
 void kent_page_runs(kent_page *page);      /* what supports take, where such runs are */
 void kent_page_devices(kent_page *page);   /* extremes of devices, by scenario */

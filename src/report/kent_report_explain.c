@@ -396,23 +396,57 @@ static void add_leg(const kent_sheet *s, const kent_leg *leg, kent_text *words)
     if (!leg->fits) kent_text_add(words, " (does not fit before the next fitting)");
 }
 
-/* "block 1.05 × 0.70 × 0.45 m"; a volume or a length has its unit already. */
+/* "block 1.05 × 0.70 × 0.45 m", "gravity 2.5 m³, 4ø16 mm"; a volume or a length has its
+ * unit already. */
 static void add_part(const kent_sheet *s, const kent_part *part, kent_text *words)
 {
     const kent_block *b = &s->holding->block;
     const bool block = s->holding->held && b->type != KENT_BLOCK_NONE;
-    const bool sides = block && (part->face || b->type != KENT_BLOCK_GRAVITY);
+    const bool sides =
+        block && !part->joints && (part->face || b->type != KENT_BLOCK_GRAVITY);
+    const bool tied =
+        block && !part->joints && !part->face && s->holding->straps.legs > 0;
     kent_text_add(
-        words, "%s%s%s",
+        words, "%s",
         kent_shown_part(s->model, s->fitting, s->holding, part, s->units, KENT_ROOMY)
-            .text,
-        sides ? " " : "", sides ? kent_shown_unit(KENT_LENGTH, s->units).text : "");
+            .text);
+    if (sides) {
+        kent_text_add(words, " %s", kent_shown_unit(KENT_LENGTH, s->units).text);
+    } else if (tied) {
+        kent_text_add(words, " %s", kent_shown_unit(KENT_DIAMETER, s->units).text);
+    }
+}
+
+/* "A block instead: block 1.05 × 0.70 × 0.45 m, 0.39 m³ of concrete." */
+static void print_block_instead(const kent_sheet *s)
+{
+    const kent_either *e = &s->holding->either;
+    kent_text words = {0};
+    if (!e->looked_at || s->holding->chosen != KENT_RESTRAINED_JOINTS) return;
+    kent_text_add(&words, "A block instead: ");
+    if (e->block.type == KENT_BLOCK_NONE) {
+        kent_text_add(&words, "none%s%s.", e->no_block ? ": " : "",
+                      e->no_block ? e->no_block : "");
+    } else {
+        const bool sides = e->block.type != KENT_BLOCK_GRAVITY;
+        kent_text_add(
+            &words, "%s%s%s, ", kent_shown_block(&e->block, s->units, KENT_ROOMY).text,
+            sides ? " " : "", sides ? kent_shown_unit(KENT_LENGTH, s->units).text : "");
+        kent_text_add(
+            &words, "%s of concrete in all.",
+            kent_shown_with_unit(KENT_VOLUME, s->units, e->quantities.concrete).text);
+    }
+    kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
+    s->out->failed = s->out->failed || words.failed;
+    kent_text_clear(&words);
 }
 
 /* What holds it, and the restrained length beside it. */
 static void print_outcome(const kent_sheet *s)
 {
     const kent_holding *h = s->holding;
+    const bool alone = h->chosen == KENT_RESTRAINED_JOINTS;
+    const bool both = h->chosen == KENT_BLOCK_AND_JOINTS;
     kent_part parts[KENT_PARTS];
     kent_text words = {0};
     const size_t count = kent_shown_parts(s->loads, h, parts);
@@ -431,8 +465,7 @@ static void print_outcome(const kent_sheet *s)
         kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
     }
     kent_text_reset(&words);
-    kent_text_add(&words, "Restrained length%s: ",
-                  h->chosen == KENT_RESTRAINED_JOINTS ? "" : " instead");
+    kent_text_add(&words, "Restrained length%s: ", alone || both ? "" : " instead");
     for (size_t i = 0; i < h->leg_count; i++) {
         if (i > 0) kent_text_add(&words, "; ");
         add_leg(s, &h->legs[i], &words);
@@ -445,6 +478,7 @@ static void print_outcome(const kent_sheet *s)
     kent_table_paragraph(s->out, s->limit, "", kent_text_of(&words));
     s->out->failed = s->out->failed || words.failed;
     kent_text_clear(&words);
+    print_block_instead(s);
 }
 
 /* What strings of fused or welded pipe pull at it with. */
@@ -458,23 +492,37 @@ static void print_pulls(const kent_sheet *s)
         kent_text_add(s->out, "\n");
         kent_steps_print(&p->derivation, s->units, s->limit, s->out);
         for (size_t k = 0; k < p->cautions.count; k++) {
-            kent_table_paragraph(s->out, s->limit, "-  ", p->cautions.text[k]);
+            kent_table_paragraph(s->out, s->limit, p->cautions.grave[k] ? "!  " : "-  ",
+                                 p->cautions.text[k]);
         }
     }
 }
 
-/* Of this fitting, then of the case and its runs. */
+static void print_those(const kent_sheet *s, const kent_notes *notes, bool grave)
+{
+    for (size_t i = 0; i < notes->count; i++) {
+        if (notes->grave[i] != grave) continue;
+        kent_table_paragraph(s->out, s->limit, grave ? "!  " : "-  ", notes->text[i]);
+    }
+}
+
+/* As under the table: what is unsafe first, of the whole case before its own. */
 static void print_cautions(const kent_sheet *s)
 {
-    static const char *const LEADS[] = {"-  ", "-  ", "!  "}; /* as under the table */
-    const kent_notes *notes[] = {&s->holding->cautions, &s->holding->remarks,
-                                 &s->results->cautions};
-    if (notes[0]->count + notes[1]->count + notes[2]->count == 0) return;
+    const kent_notes *notes[] = {&s->results->cautions, &s->holding->cautions,
+                                 &s->holding->remarks};
+    const size_t count = sizeof notes / sizeof notes[0];
+    size_t said = 0;
+    for (size_t k = 0; k < count; k++) {
+        said += notes[k]->count;
+    }
+    if (said == 0) return;
     kent_text_add(s->out, "\nCautions\n");
-    for (size_t k = 0; k < sizeof notes / sizeof notes[0]; k++) {
-        for (size_t i = 0; i < notes[k]->count; i++) {
-            kent_table_paragraph(s->out, s->limit, LEADS[k], notes[k]->text[i]);
-        }
+    for (size_t k = 0; k < count; k++) {
+        print_those(s, notes[k], true);
+    }
+    for (size_t k = 0; k < count; k++) {
+        print_those(s, notes[(k + 1) % count], false); /* its own first */
     }
 }
 

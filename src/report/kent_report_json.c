@@ -497,7 +497,9 @@ static json_t *fitting_of(const kent_results *r, size_t index)
     kent_object_set(&o, "restrained_length_m", kent_json_real(h->restrained_length));
     kent_object_set(&o, "restrained", kent_json_legs(m, f, h));
     kent_object_set(&o, "as_built", kent_json_built(r, index));
+    kent_object_set(&o, "block_or_joints", kent_json_either(&h->either));
     kent_object_set(&o, "cautions", kent_json_notes(&h->cautions));
+    kent_object_set(&o, "unsafe", kent_json_grave(&h->cautions));
     return kent_object_done(o);
 }
 
@@ -553,6 +555,8 @@ kent_status kent_report_json(const kent_results *r, kent_sink sink)
     if (r->sensitivity) kent_json_put_sensitivity(&w);
     kent_json_put_text(&w, ",\n\"cautions\": ");
     kent_json_put(&w, kent_json_notes(&r->cautions));
+    kent_json_put_text(&w, ",\n\"unsafe\": ");
+    kent_json_put(&w, kent_json_grave(&r->cautions));
     kent_json_put_text(&w, "}\n");
     return w.status;
 }

@@ -28,11 +28,23 @@ static void letter_of(size_t index, char out[4])
     out[length] = '\0';
 }
 
+static void number_systems(kent_page *page)
+{
+    const kent_systems *all = &page->results->restraints->systems;
+    for (size_t i = 0; i < all->count; i++) {
+        for (size_t k = 0; k < all->at[i].fitting_count; k++) {
+            page->system[all->fittings[all->at[i].fitting_first + k]] = i + 1;
+        }
+    }
+}
+
 static kent_status page_open(kent_page *page, const kent_report_options *o)
 {
     const kent_restraints *all = page->results->restraints;
     page->letter = kent_alloc(page->model->fitting_count, sizeof *page->letter);
-    if (!page->letter) return KENT_E_NOMEM;
+    page->system = kent_alloc(page->model->fitting_count, sizeof *page->system);
+    if (!page->letter || !page->system) return KENT_E_NOMEM;
+    number_systems(page);
     const kent_status status =
         kent_listing_make(page->results, o, true, &page->listing);
     size_t lettered = 0;
@@ -48,6 +60,7 @@ static kent_status page_open(kent_page *page, const kent_report_options *o)
 static void page_close(kent_page *page)
 {
     kent_listing_clear(&page->listing);
+    free(page->system);
     free(page->letter);
 }
 
@@ -122,7 +135,9 @@ static void part_cells(const kent_page *page, size_t i, const kent_part *part,
             kent_shown_quantity(KENT_FORCE, units, kent_vec3_length(thrust)).text);
         kent_table_cell(t, "%s", kent_shown_push(m, f, thrust, units, room).text);
     }
-    if (letter[0] == '\0') {
+    if (part->joints && page->system[i] > 0) {
+        kent_table_cell(t, "%s, S%zu", holding.text, page->system[i]);
+    } else if (letter[0] == '\0') {
         kent_table_cell(t, "%s", holding.text);
     } else {
         kent_table_cell(t, room == KENT_ROOMY ? "%s, see %s" : "%s, %s", holding.text,
@@ -165,6 +180,16 @@ static void fitting_rows(const kent_page *page, size_t i, kent_room room, kent_t
     }
 }
 
+static bool any_straps(const kent_page *page)
+{
+    for (size_t i = 0; i < page->listing.count; i++) {
+        const kent_holding *h =
+            &page->results->restraints->fittings[page->listing.fitting[i]];
+        if (h->held && h->straps.legs > 0) return true;
+    }
+    return false;
+}
+
 /* Prints the table with so much room; false where it needs more and there is less to
  * be had. */
 static bool try_fittings(kent_page *page, kent_room room)
@@ -174,9 +199,11 @@ static bool try_fittings(kent_page *page, kent_room room)
     const kent_shown bar = kent_shown_unit(KENT_PRESSURE, page->units);
     const kent_shown kn = kent_shown_unit(KENT_FORCE, page->units);
     const kent_shown m = kent_shown_unit(KENT_LENGTH, page->units);
-    char arrows[KENT_SHOWN + 16], sides[KENT_SHOWN + 16];
+    char arrows[KENT_SHOWN + 16], sides[2 * KENT_SHOWN + 32];
     (void)snprintf(arrows, sizeof arrows, "↑ ↓ in %s", kn.text);
-    (void)snprintf(sides, sizeof sides, "w × h × t in %s", m.text);
+    const bool tied = any_straps(page);
+    (void)snprintf(sides, sizeof sides, "w × h × t %s%s%s%s", tied ? "" : "in ", m.text,
+                   tied ? ", ø " : "", tied ? inch.text : "");
     const kent_column columns[FITTING_COLUMNS] = {
         [STATION] = {roomy ? "station" : "sta.", "", KENT_ALIGN_LEFT, false},
         [POINT] = {"point", "", KENT_ALIGN_LEFT, true},
@@ -236,60 +263,6 @@ static void print_refusals(kent_page *page)
     }
 }
 
-static bool has_note(const kent_notes *notes, const char *caution)
-{
-    for (size_t k = 0; k < notes->count; k++) {
-        if (strcmp(notes->text[k], caution) == 0) return true;
-    }
-    return false;
-}
-
-/* One caution with every fitting that has it. */
-static void print_caution(kent_page *page, const char *caution)
-{
-    enum { NAMED = 8 };
-    size_t named = 0;
-    kent_text words = {0};
-    for (size_t i = 0; i < page->listing.count; i++) {
-        const size_t f = page->listing.fitting[i];
-        if (page->letter[f][0] != '\0') continue;
-        if (!has_note(&page->results->restraints->fittings[f].cautions, caution)) {
-            continue;
-        }
-        if (named < NAMED) {
-            kent_text_add(&words, "%s%s", named > 0 ? ", " : "",
-                          page->model->fittings[f].id);
-        }
-        named++;
-    }
-    if (named > NAMED) kent_text_add(&words, " and %zu more", named - NAMED);
-    kent_text_add(&words, ": %s", caution);
-    kent_table_paragraph(page->out, page->limit, "-  ", kent_text_of(&words));
-    page->out->failed = page->out->failed || words.failed;
-    kent_text_clear(&words);
-}
-
-static void print_cautions(kent_page *page)
-{
-    kent_notes distinct = {0};
-    for (size_t i = 0; i < page->listing.count; i++) {
-        const size_t f = page->listing.fitting[i];
-        const kent_notes *notes = &page->results->restraints->fittings[f].cautions;
-        for (size_t k = 0; page->letter[f][0] == '\0' && k < notes->count; k++) {
-            kent_notes_add(&distinct, "%s", notes->text[k]);
-        }
-    }
-    for (size_t k = 0; k < distinct.count; k++) {
-        print_caution(page, distinct.text[k]);
-    }
-    const kent_notes *all = &page->results->cautions;
-    for (size_t k = 0; k < all->count; k++) {
-        kent_table_paragraph(page->out, page->limit, "!  ", all->text[k]);
-    }
-    page->out->failed = page->out->failed || distinct.failed;
-    kent_notes_clear(&distinct);
-}
-
 /* "Factor asked 1.50", or the range where load cases ask for different ones. */
 static void add_factors(const kent_page *page, kent_text *words)
 {
@@ -313,32 +286,85 @@ static void add_listed(const kent_page *page, kent_text *words)
     kent_text_add(words, "Listed: %zu of %zu fittings. ", page->listing.count, all);
 }
 
-static void print_totals(kent_page *page)
+/* "14.5 m³" */
+static void add_volume(const kent_page *page, double volume, kent_text *words)
+{
+    const kent_shown number =
+        kent_shown_number(kent_units_shown(KENT_VOLUME, page->units, volume), 1);
+    kent_text_add(words, "%s %s", number.text,
+                  kent_shown_unit(KENT_VOLUME, page->units).text);
+}
+
+/* Concrete, what is dug for it and what is formed; when it may be tested. */
+static void add_blocks(const kent_page *page, kent_text *words)
 {
     const kent_restraints *all = page->results->restraints;
+    const kent_quantities *q = &all->quantities;
+    kent_text_add(words, "Concrete ");
+    add_volume(page, all->concrete, words);
+    if (q->concrete > 0.0) {
+        kent_text_add(words, ", excavation ");
+        if (isnan(q->excavation)) {
+            kent_text_add(words, "not known without a cover");
+        } else {
+            add_volume(page, q->excavation, words);
+        }
+        kent_text_add(
+            words, ", forms %s %s",
+            kent_shown_number(kent_units_shown(KENT_AREA, page->units, q->formed), 1)
+                .text,
+            kent_shown_unit(KENT_AREA, page->units).text);
+        if (all->age > 0.0) {
+            kent_text_add(words, ", no test before %.0f days", all->age / 86400.0);
+        }
+    }
+    if (all->not_held > 0) {
+        kent_text_add(words, ", without the %zu fitting%s that nothing here can hold",
+                      all->not_held, plural(all->not_held));
+    }
+    kent_text_add(words, ". ");
+}
+
+/* Restrained pipe in all; each joint counts once. */
+static void add_joints(const kent_page *page, kent_text *words)
+{
+    const kent_systems *all = &page->results->restraints->systems;
+    double length = 0.0;
+    int joints = 0;
+    bool counted = true;
+    if (all->count == 0) return;
+    for (size_t i = 0; i < all->count; i++) {
+        length += all->at[i].length;
+        joints += all->at[i].joints;
+        counted = counted && all->at[i].joints > 0;
+    }
+    if (counted) {
+        kent_text_add(words, "Restrained: %d joint%s over ", joints,
+                      plural((size_t)joints));
+    } else {
+        kent_text_add(words, "Restrained: every joint over ");
+    }
+    kent_text_add(words, "%s. ",
+                  kent_shown_with_unit(KENT_LENGTH, page->units, length).text);
+}
+
+static void print_totals(kent_page *page)
+{
     const size_t assumed = page->model->assumed.count;
     kent_text words = {0};
     add_listed(page, &words);
     add_factors(page, &words);
-    const kent_shown volume =
-        kent_shown_number(kent_units_shown(KENT_VOLUME, page->units, all->concrete), 1);
-    kent_text_add(&words, "Concrete %s %s", volume.text,
-                  kent_shown_unit(KENT_VOLUME, page->units).text);
-    if (all->not_held > 0) {
-        kent_text_add(&words, " without the %zu fitting%s that nothing here can hold",
-                      all->not_held, plural(all->not_held));
-    }
-    kent_text_add(&words, ". ");
+    add_blocks(page, &words);
+    add_joints(page, &words);
+    if (page->results->incomplete) kent_text_add(&words, "Load cases: not complete. ");
     if (assumed > 0) {
         kent_text_add(&words, "%zu value%s assumed: see `kentledge check`.", assumed,
                       plural(assumed));
     }
-    kent_table_paragraph(page->out, page->limit, "", kent_text_of(&words));
+    kent_page_say(page, "", &words);
     if (page->cut) {
         kent_table_paragraph(page->out, page->limit, "", KENT_TABLE_CUT);
     }
-    page->out->failed = page->out->failed || words.failed;
-    kent_text_clear(&words);
 }
 
 /* ---- the table of pressures ------------------------------------------------------ */
@@ -525,11 +551,10 @@ static void print_scenarios(kent_page *page)
 
 /* ---- --wide, and the end --------------------------------------------------------- */
 
-/* Every further column of summary.csv, as one more table. */
+/* Every further column of summary.csv, in tables of what belongs together. */
 static void print_rest(kent_page *page)
 {
     const kent_report_options o = {.units = page->units, .wide = true};
-    kent_text_add(page->out, "\n");
     kent_summary_table(page->results, &o, &page->listing, page->out);
 }
 
@@ -555,10 +580,13 @@ kent_status kent_report_tables(const kent_results *r, const kent_report_options 
     print_fittings(&page);
     kent_text_add(&out, "\n");
     print_refusals(&page);
-    print_cautions(&page);
+    kent_page_cautions(&page);
     print_totals(&page);
-    print_pressures(&page);
+    kent_page_either(&page);
+    kent_page_systems(&page);
+    kent_page_pulls(&page);
     kent_page_runs(&page);
+    print_pressures(&page);
     print_scenarios(&page);
     kent_page_limits(&page);
     kent_page_devices(&page);

@@ -293,24 +293,61 @@ kent_shown kent_shown_fitting(const kent_model *m, const kent_fitting *fitting,
     return shown("%s", word);
 }
 
+static double asked_of(const kent_fitting_loads *loads, int governing)
+{
+    return governing >= 0 ? loads->cases[governing].safety_factor : (double)NAN;
+}
+
+/* The block, and its face. */
+static size_t block_parts(const kent_fitting_loads *loads, const kent_holding *holding,
+                          kent_part parts[KENT_PARTS])
+{
+    const kent_block *b = &holding->block;
+    const kent_sense own = b->sense;
+    const int sideways = holding->by_sense[KENT_SIDEWAYS];
+    const kent_part body = {.sense = own,
+                            .governing = holding->by_sense[own],
+                            .factor_reached = b->factor_reached,
+                            .utilisation = b->utilisation};
+    const kent_part face = {.sense = KENT_SIDEWAYS,
+                            .governing = sideways,
+                            .face = true,
+                            .factor_reached =
+                                asked_of(loads, sideways) / b->face_utilisation,
+                            .utilisation = b->face_utilisation};
+    /* joints beside both may govern the whole */
+    const bool face_first = b->has_face && (holding->sense == KENT_RESULTANT
+                                                ? b->face_utilisation > b->utilisation
+                                                : holding->sense != own);
+    parts[0] = face_first ? face : body;
+    parts[1] = face_first ? body : face;
+    return b->has_face ? 2 : 1;
+}
+
 size_t kent_shown_parts(const kent_fitting_loads *loads, const kent_holding *holding,
                         kent_part parts[KENT_PARTS])
 {
-    const kent_block *b = &holding->block;
-    parts[0] = (kent_part){holding->sense, holding->governing, false,
-                           holding->factor_reached, holding->utilisation};
-    if (!holding->held || !b->has_face) return 1;
-    const kent_sense own = b->sense;
-    const int sideways = holding->by_sense[KENT_SIDEWAYS];
-    const double asked = sideways >= 0 ? loads->cases[sideways].safety_factor : NAN;
-    const kent_part body = {own, holding->by_sense[own], false, b->factor_reached,
-                            b->utilisation};
-    const kent_part face = {KENT_SIDEWAYS, sideways, true, asked / b->face_utilisation,
-                            b->face_utilisation};
-    const bool body_first = holding->sense == own;
-    parts[0] = body_first ? body : face;
-    parts[1] = body_first ? face : body;
-    return 2;
+    const int whole = holding->by_sense[KENT_RESULTANT];
+    const bool block = holding->held && holding->block.type != KENT_BLOCK_NONE;
+    const bool both = block && holding->chosen == KENT_BLOCK_AND_JOINTS;
+    size_t count = 1;
+
+    parts[0] = (kent_part){.sense = holding->sense,
+                           .governing = holding->governing,
+                           .joints = holding->held && !block && !holding->soil_beside,
+                           .factor_reached = holding->factor_reached,
+                           .utilisation = holding->utilisation};
+    if (both || (block && holding->block.has_face)) {
+        count = block_parts(loads, holding, parts);
+    }
+    if (!both) return count;
+    parts[count++] =
+        (kent_part){.sense = KENT_RESULTANT,
+                    .governing = whole,
+                    .joints = true,
+                    .factor_reached = asked_of(loads, whole) / holding->joints_use,
+                    .utilisation = holding->joints_use};
+    return count;
 }
 
 const kent_instant *kent_part_instant(const kent_fitting_loads *loads,
@@ -372,7 +409,7 @@ static kent_shown three_sides(const char *word, const double sides[3],
     return shown("%s%.20s%s%.20s%s%.20s", word, a.text, by, b.text, by, c.text);
 }
 
-static kent_shown block_words(const kent_block *b, kent_system system, kent_room room)
+kent_shown kent_shown_block(const kent_block *b, kent_system system, kent_room room)
 {
     const double sides[3] = {b->width, b->height, b->thickness};
     if (b->type == KENT_BLOCK_GRAVITY) {
@@ -383,6 +420,14 @@ static kent_shown block_words(const kent_block *b, kent_system system, kent_room
     }
     return three_sides(b->type == KENT_BLOCK_BASE ? "base " : "block ", sides, system,
                        room);
+}
+
+kent_shown kent_shown_straps(const kent_straps *straps, kent_system system)
+{
+    if (straps->legs == 0) return shown(KENT_SHOWN_NONE);
+    const double size = kent_units_shown(KENT_DIAMETER, system, straps->diameter);
+    if (system == KENT_SI) return shown("%dø%.0f", straps->legs, size);
+    return shown("%dø%.4g", straps->legs, size);
 }
 
 kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
@@ -402,7 +447,13 @@ kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
         const double sides[3] = {b->face.width, b->face.height, b->face_thickness};
         return three_sides("face ", sides, system, room);
     }
-    if (b->type != KENT_BLOCK_NONE) return block_words(b, system, room);
+    if (!part->joints) {
+        const kent_shown block = kent_shown_block(b, system, room);
+        const kent_shown straps = kent_shown_straps(&holding->straps, system);
+        const bool tied = holding->straps.legs > 0;
+        return shown("%.100s%s%.40s", block.text, tied ? ", " : "",
+                     tied ? straps.text : "");
+    }
     const double length =
         kent_units_shown(KENT_LENGTH, system, holding->restrained_length);
     return shown("joints %.20s %.20s", kent_shown_number(length, 1).text,

@@ -56,17 +56,20 @@ kent_shown kent_shown_size(const kent_model *m, const kent_fitting *fitting,
                            kent_system system);
 
 /* One thing that holds a fitting, or the statement that none does: a block has one, a
- * gravity block or base that leans on a face of its own has two. */
+ * gravity block or base that leans on a face of its own has two, and restrained joints
+ * beside a block are one more. */
 typedef struct kent_part {
     kent_sense sense;
     int governing; /* its load case; -1: none */
     bool face;     /* the face beside a gravity block or base */
+    bool joints;   /* restrained joints, chosen alone or beside a block */
     double factor_reached, utilisation;
 } kent_part;
 
-enum { KENT_PARTS = 2 };
+enum { KENT_PARTS = 3 };
 
-/* Fills parts, what governs first, and returns how many there are: 1 or 2. */
+/* Fills parts, of a block what governs first, and returns how many there are: 1 to 3.
+ */
 size_t kent_shown_parts(const kent_fitting_loads *loads, const kent_holding *holding,
                         kent_part parts[KENT_PARTS]);
 
@@ -78,11 +81,19 @@ const kent_instant *kent_part_instant(const kent_fitting_loads *loads,
 kent_shown kent_shown_governing(const kent_fitting_loads *loads, const kent_part *part,
                                 kent_room room);
 
-/* What it is: "block 2.10 × 1.10 × 0.75", "gravity 8.9 m³", "face 1.35 × 1.25 × 0.45",
- * "joints 24.0 m", "none: peat". */
+/* What it is: "block 2.10 × 1.10 × 0.75", "gravity 8.9 m³, 4ø16" (legs of straps and
+ * their diameter, mm or in), "face 1.35 × 1.25 × 0.45", "joints 24.0 m", "none: peat".
+ */
 kent_shown kent_shown_part(const kent_model *m, const kent_fitting *fitting,
                            const kent_holding *holding, const kent_part *part,
                            kent_system system, kent_room room);
+
+/* A block, without a face of its own: "block 2.10 × 1.10 × 0.75", "gravity 8.9 m³". */
+kent_shown kent_shown_block(const kent_block *b, kent_system system, kent_room room);
+
+/* Legs and diameter of straps or rods, mm or in: "4ø16"; a dash where none are sized.
+ */
+kent_shown kent_shown_straps(const kent_straps *straps, kent_system system);
 
 /* Adds "friction = 0.1 mm: why" for a model's "friction\t0.1 mm\twhy". */
 void kent_shown_assumption(const char *note, kent_text *out);

@@ -1,11 +1,12 @@
 /* Inside report/ only: one row per fitting, every column once. summary.csv and the last
- * table of --wide both walk the same list of columns. */
+ * tables of --wide walk the same list of columns. */
 #ifndef KENT_SUMMARY_H
 #define KENT_SUMMARY_H
 
 #include "kent_listing.h"
 
-/* The columns that the narrow table does not have, as an aligned table. */
+/* The columns that the narrow table does not have and that any fitting has something
+ * in, as aligned tables of what belongs together. */
 void kent_summary_table(const kent_results *r, const kent_report_options *o,
                         const kent_listing *listing, kent_text *out);
 

@@ -34,9 +34,9 @@ static void caution_test_pressure(const kent_holding_work *w, kent_holding *h)
         worst = c;
     }
     if (!worst || !(highest > test * (1.0 + 1e-9))) return; /* NAN: no test case */
-    kent_notes_add(&h->cautions, "'%s' reaches %s here, above the test pressure of %s",
-                   worst->title.s, kent_said_of(KENT_PRESSURE, units, highest).s,
-                   kent_said_of(KENT_PRESSURE, units, test).s);
+    kent_notes_warn(&h->cautions, "'%s' reaches %s here, above the test pressure of %s",
+                    worst->title.s, kent_said_of(KENT_PRESSURE, units, highest).s,
+                    kent_said_of(KENT_PRESSURE, units, test).s);
 }
 
 /* One instant above 90 % may be the grid's own, however long its step. */
@@ -82,7 +82,7 @@ static void caution_bearing(const kent_holding_work *w, kent_holding *h)
         kent_text_add(&t, "; its unit weight is not given, %s is assumed",
                       kent_said_of(KENT_UNIT_WEIGHT, units, claim.unit_weight).s);
     }
-    kent_notes_add(&h->cautions, "%s", kent_text_of(&t));
+    kent_notes_warn(&h->cautions, "%s", kent_text_of(&t));
     h->cautions.failed = h->cautions.failed || t.failed;
     kent_text_clear(&t);
 }
@@ -105,7 +105,7 @@ static void caution_own_strength(const kent_holding_work *w, kent_holding *h)
     own.passive_share = 1.0;
     const double gives = kent_way_bearing(&own, KENT_WAY_RANKINE, &at, &gap);
     if (!(presses > gives)) return; /* NaN: not known */
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "soil '%s' gives way at %s by its own friction angle and cohesion at "
         "this depth, and %s are put on it before any factor: one of its "
@@ -162,8 +162,8 @@ static void caution_block(const kent_holding_work *w, kent_holding *h)
     }
     if (w->demand.load[KENT_UPWARD] > 0.0) {
         if (!w->soil) {
-            kent_notes_add(&h->cautions,
-                           "the soil under the gravity block is not stated");
+            kent_notes_warn(&h->cautions,
+                            "the soil under the gravity block is not stated");
         }
     }
     kent_stability_caution(w, h);
@@ -233,7 +233,7 @@ static void caution_role(const kent_holding_work *w, kent_holding *h)
 static void caution_parted(const kent_holding_work *w, kent_holding *h)
 {
     if (!w->fitting->parted || h->unbalanced) return;
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "no pipe joins all of these fittings: each may be under pressure without the "
         "others, and then pushes another way than the block is sized for");
@@ -247,11 +247,11 @@ static void caution_couple(const kent_holding_work *w, kent_holding *h)
 
     if (w->fitting->type != KENT_GROUP || h->unbalanced) return;
     if (c->largest <= KENT_HOLDING_LEAST * w->fitting->outside_diameter) return;
-    kent_notes_add(&h->cautions,
-                   "the pushes of these fittings leave a couple of %s before any "
-                   "factor: nothing is sized for it; write apart = true where they "
-                   "stand, to have each held by itself",
-                   kent_said_of(KENT_MOMENT, w->m->units, c->largest).s);
+    kent_notes_warn(&h->cautions,
+                    "the pushes of these fittings leave a couple of %s before any "
+                    "factor: nothing is sized for it; write apart = true where they "
+                    "stand, to have each held by itself",
+                    kent_said_of(KENT_MOMENT, w->m->units, c->largest).s);
 }
 
 /* Obstacles are held against the wedge before a block's face only. A curve, and a bend
@@ -273,7 +273,7 @@ static void caution_near(const kent_holding_work *w, kent_holding *h)
     }
     for (size_t i = 0; i < w->fitting->obstacle_count; i++) {
         const kent_obstacle *o = &w->m->obstacles[w->fitting->obstacle_first + i];
-        kent_notes_add(
+        kent_notes_warn(
             &h->cautions,
             "'%s' stands near, and the pipe leans on the side of its trench: "
             "whether that ground stays is not looked at",

@@ -22,7 +22,7 @@ static void caution_pressed(const kent_holding_work *w, kent_holding *h)
         return;
     }
     if (c->use > 1.0 + 1e-9) { /* on a contact that nobody states */
-        kent_notes_add(
+        kent_notes_warn(
             &h->cautions,
             "the fitting surely presses on %s of the block alone, and there with %s, "
             "where concrete of %s takes %s: state what it presses on as contact_area "
@@ -35,11 +35,12 @@ static void caution_pressed(const kent_holding_work *w, kent_holding *h)
         return;
     }
     if (!c->splits) return;
-    kent_notes_add(&h->cautions,
-                   "the fitting presses on the block with %s, which its concrete takes "
-                   "only as the thrust widens inside it: reinforce it there against "
-                   "splitting",
-                   kent_said_of(KENT_STRENGTH, units, c->pressure).s);
+    kent_notes_warn(
+        &h->cautions,
+        "the fitting presses on the block with %s, which its concrete takes "
+        "only as the thrust widens inside it: reinforce it there against "
+        "splitting",
+        kent_said_of(KENT_STRENGTH, units, c->pressure).s);
 }
 
 void kent_concrete_caution(const kent_holding_work *w, kent_holding *h)
@@ -49,7 +50,7 @@ void kent_concrete_caution(const kent_holding_work *w, kent_holding *h)
     if (!c->made) return;
     caution_pressed(w, h);
     if (!isnan(c->age)) return;
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "concrete of %s never has the %s that it needs before a test: take a "
         "stronger one",

@@ -72,12 +72,13 @@ static void caution_net(const kent_holding_work *w, kent_holding *h)
 
     if (!view->seen || w->site.leans->route != KENT_BEARING_PASSIVE) return;
     if (!(counts > net * (1.0 + SAME))) return; /* NaN: not known */
-    kent_notes_add(&h->cautions,
-                   "of the passive pressure %s are counted on over this face, and less "
-                   "the active pressure behind the block the ground gives %s in all: "
-                   "state a smaller passive_share",
-                   kent_said_of(KENT_FORCE, w->m->units, counts).s,
-                   kent_said_of(KENT_FORCE, w->m->units, net).s);
+    kent_notes_warn(
+        &h->cautions,
+        "of the passive pressure %s are counted on over this face, and less "
+        "the active pressure behind the block the ground gives %s in all: "
+        "state a smaller passive_share",
+        kent_said_of(KENT_FORCE, w->m->units, counts).s,
+        kent_said_of(KENT_FORCE, w->m->units, net).s);
 }
 
 static void caution_slope(const kent_holding_work *w, kent_holding *h)
@@ -90,7 +91,7 @@ static void caution_slope(const kent_holding_work *w, kent_holding *h)
     level.falls = 0.0;
     const double share = w->site.allowable / kent_soil_bearing(s, &level, &gap);
     if (isnan(share)) return; /* refused */
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "the ground before the face falls by %s along the thrust: %.2f of what soil "
         "'%s' gives on level ground is counted on, and the wedge that holds is short; "
@@ -119,7 +120,7 @@ void kent_footing_caution(const kent_holding_work *w, kent_holding *h)
 
     if (h->block.type == KENT_BLOCK_NONE || !(angle > 0.0)) return;
     if (!(w->demand.load[KENT_DOWNWARD] > 0.0)) return;
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "the ground falls by %s where this presses down: what the soil bears "
         "under a base is taken as on level ground; state a vertical_bearing "

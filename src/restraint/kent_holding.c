@@ -327,6 +327,9 @@ void kent_holding_legs(kent_holding_work *w, kent_holding *h)
         h->legs[h->leg_count++] = kent_leg_of(w, k, &work);
         h->restrained_length = fmax(h->restrained_length, work.length);
     }
+    double use = 0.0;
+    h->either.joints = joints_hold(w, h, wanted, &use);
+    if (h->either.joints) h->joints_use = use;
     if (h->chosen == KENT_RESTRAINED_JOINTS) holding_joints(w, h, wanted);
     if (h->chosen == KENT_BLOCK_AND_JOINTS) holding_both(w, h, wanted);
 }

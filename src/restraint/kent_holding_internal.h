@@ -93,6 +93,8 @@ void kent_holding_policy(kent_holding_work *w, kent_holding *h);
 void kent_holding_size(kent_holding_work *w, kent_holding *h);   /* what holds */
 void kent_holding_routes(kent_holding_work *w, kent_holding *h); /* bearing by each */
 void kent_holding_legs(kent_holding_work *w, kent_holding *h);   /* side by side */
+/* Block and joints side by side, once both were looked at. */
+void kent_holding_either(const kent_holding_work *w, kent_holding *h);
 /* One leg of the fitting in whole pipes; what it meets goes to w's met. */
 kent_leg kent_leg_of(kent_holding_work *w, size_t port, const kent_leg_work *work);
 void kent_holding_refuse(kent_holding_work *w, kent_holding *h); /* what would help */

@@ -28,10 +28,10 @@ static void caution_area(const kent_holding_work *w, kent_holding *h)
     const bool inside = w->m->loads.thrust_area == KENT_AREA_INSIDE;
 
     if (w->m->loads.thrust_area == KENT_AREA_OUTSIDE || more <= 1.0 + 1e-9) return;
-    kent_notes_add(&h->cautions,
-                   "its thrust is taken on the %s, as thrust_area says; a joint that "
-                   "slips is pressed on its outside diameter, with up to %.0f %% more",
-                   inside ? "bore" : "nominal size", 100.0 * (more - 1.0));
+    kent_notes_warn(&h->cautions,
+                    "its thrust is taken on the %s, as thrust_area says; a joint that "
+                    "slips is pressed on its outside diameter, with up to %.0f %% more",
+                    inside ? "bore" : "nominal size", 100.0 * (more - 1.0));
 }
 
 /* The block behind a cap goes with the cap. */
@@ -100,7 +100,7 @@ static void caution_straight(const kent_holding_work *w, kent_holding *h)
                        size.s, of->title.s);
         return;
     }
-    kent_notes_add(
+    kent_notes_warn(
         &h->cautions,
         "it takes no pull: %s opens it, before any factor ('%s'), unless tie "
         "bolts across it hold or both sides are held",

@@ -191,11 +191,11 @@ static void caution_missing(const kent_model *m, const kent_string_end *e,
                        "expansion by heat is not known; give its expansion",
                        at, p->id);
     } else if (cooled && p->plastic && isnan(p->long_modulus)) {
-        kent_notes_add(cautions,
-                       "pipe \"%s\" has no long_modulus: its short-term modulus is "
-                       "taken for lasting cold as well, which overstates the pull and "
-                       "understates the movement",
-                       p->id);
+        kent_notes_warn(cautions,
+                        "pipe \"%s\" has no long_modulus: its short-term modulus is "
+                        "taken for lasting cold as well, which overstates the pull and "
+                        "understates the movement",
+                        p->id);
     }
 }
 
@@ -258,14 +258,15 @@ static void caution_holder(const kent_model *m, const kent_string_end *e,
         break;
     case KENT_PULL_NOTHING:
         say_alternatives(m, e, p, &t);
-        kent_notes_add(&p->cautions,
-                       "at %s pipe \"%s\" pulls with %s, and nothing in the case holds "
-                       "it%s: it takes %s",
-                       at, pipe, pull.s,
-                       e->kind == KENT_STRING_TO_DEVICE
-                           ? " but what stands there, which is not made to be pulled"
-                           : "",
-                       kent_text_of(&t));
+        kent_notes_warn(
+            &p->cautions,
+            "at %s pipe \"%s\" pulls with %s, and nothing in the case holds "
+            "it%s: it takes %s",
+            at, pipe, pull.s,
+            e->kind == KENT_STRING_TO_DEVICE
+                ? " but what stands there, which is not made to be pulled"
+                : "",
+            kent_text_of(&t));
         p->cautions.failed = p->cautions.failed || t.failed;
         kent_text_clear(&t);
         break;
@@ -281,10 +282,11 @@ static void caution_parts(const kent_model *m, const kent_strings *strings,
         const kent_pipe *p = &m->pipes[part->pipe];
         const char *lacking = kent_pull_lacking(p);
         if (part->string != e->string || lacking[0] == '\0') continue;
-        kent_notes_add(cautions,
-                       "at %s the pull leaves out pipe \"%s\" of the same string: give "
-                       "its %s",
-                       m->points[e->point].id, p->id, lacking);
+        kent_notes_warn(
+            cautions,
+            "at %s the pull leaves out pipe \"%s\" of the same string: give "
+            "its %s",
+            m->points[e->point].id, p->id, lacking);
     }
 }
 
@@ -306,7 +308,7 @@ void kent_pull_end_find(const kent_model *m, const kent_loads_result *loads,
         .beyond_length = NAN,
     };
     if (lacking[0] != '\0') {
-        kent_notes_add(
+        kent_notes_warn(
             &out->cautions,
             "at %s pipe \"%s\" pulls on whatever holds its end, and how much "
             "cannot be worked out: give its %s",

@@ -97,12 +97,12 @@ static void judge_part(const kent_model *m, const kent_pipe *p, rated_part part,
     if (!rated) return;
     const double rating = rating_of(p, part, rated), pressure = pressure_of(rated);
     if (!(pressure > rating * (1.0 + 1e-9))) return;
-    kent_notes_add(&h->cautions,
-                   "%s of pipe \"%s\" are rated for %s, and '%s' brings %s before "
-                   "any factor: restrained they pull apart or break; use some that "
-                   "are rated for it",
-                   what, p->id, kent_said_of(KENT_PRESSURE, m->units, rating).s,
-                   rated->title.s, kent_said_of(KENT_PRESSURE, m->units, pressure).s);
+    kent_notes_warn(&h->cautions,
+                    "%s of pipe \"%s\" are rated for %s, and '%s' brings %s before "
+                    "any factor: restrained they pull apart or break; use some that "
+                    "are rated for it",
+                    what, p->id, kent_said_of(KENT_PRESSURE, m->units, rating).s,
+                    rated->title.s, kent_said_of(KENT_PRESSURE, m->units, pressure).s);
 }
 
 /* Every pipe that the leg runs along. */

@@ -61,6 +61,8 @@ static void holding_start(kent_holding *h, const kent_fitting *f)
         .factor_reached = NAN,
         .utilisation = NAN,
         .restrained_length = NAN,
+        .joints_use = NAN,
+        .either.block = kent_block_none(),
     };
 }
 
@@ -87,6 +89,7 @@ static kent_status holding_work_out(kent_holding_work *w, kent_holding *h,
         kent_holding_footprint(w, h);
         kent_holding_refuse(w, h);
         kent_concrete_finish(w, h);
+        kent_holding_either(w, h);
     }
     kent_as_built_find(w, h);
     kent_holding_caution(w, h);

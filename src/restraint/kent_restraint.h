@@ -142,6 +142,16 @@ typedef struct kent_leg { /* restrained length of one port */
     double structure_pull; /* N, factored, that a structure takes at its end; else 0 */
 } kent_leg;
 
+/* A block and restrained joints beside each other, whichever is chosen. */
+typedef struct kent_either {
+    bool looked_at;             /* something is to be held, and not as a group apart */
+    kent_block block;           /* that is built, or in place of joints would be */
+    kent_quantities quantities; /* of that; nil without */
+    const char *no_block;       /* why there can be none, in short; NULL */
+    bool joints;                /* restrained joints hold it, or would */
+    const char *no_length;      /* why they have no length, in short; NULL */
+} kent_either;
+
 typedef struct kent_holding {
     int governing;    /* index into the fitting's load cases; -1: no thrust at all */
     kent_sense sense; /* sideways, upward or downward: whichever uses most; the whole
@@ -173,6 +183,8 @@ typedef struct kent_holding {
     kent_leg legs[KENT_PORTS];
     size_t leg_count;         /* 0: no restrained length can be given */
     double restrained_length; /* m, longest leg; NAN */
+    double joints_use;        /* of the legs, that hold it; NAN */
+    kent_either either;
     kent_as_built
         as_built; /* what it reaches as it was built; nothing is stated: nil */
     kent_footprint footprint; /* what it takes up of the ground */

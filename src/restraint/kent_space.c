@@ -371,20 +371,20 @@ static void say(const kent_model *m, const kent_neighbour *n, kent_holding *h)
 
     switch (n->how) {
     case KENT_MEETS_BODY:
-        kent_notes_add(&h->cautions,
-                       "its block and that of '%s' take up the same place: make them "
-                       "one block (together_with), or move one",
-                       other);
+        kent_notes_warn(&h->cautions,
+                        "its block and that of '%s' take up the same place: make them "
+                        "one block (together_with), or move one",
+                        other);
         break;
     case KENT_MEETS_OPENED:
-        kent_notes_add(&h->cautions,
-                       "the block of '%s' stands in the ground that this leans on "
-                       "(%.0f %% of it): that ground is dug open; make them one "
-                       "(together_with), or hold one of them by restrained joints",
-                       other, percent);
+        kent_notes_warn(&h->cautions,
+                        "the block of '%s' stands in the ground that this leans on "
+                        "(%.0f %% of it): that ground is dug open; make them one "
+                        "(together_with), or hold one of them by restrained joints",
+                        other, percent);
         break;
     case KENT_MEETS_SHARED:
-        kent_notes_add(
+        kent_notes_warn(
             &h->cautions,
             "this and '%s' lean on the same ground, %.0f %% of this one's at "
             "the surface%s%s%s: it does not bear both at full value; hold them as one "
@@ -393,12 +393,12 @@ static void say(const kent_model *m, const kent_neighbour *n, kent_holding *h)
             isnan(n->clear) ? "" : clear.s, isnan(n->clear) ? "" : " apart");
         break;
     case KENT_MEETS_MAIN:
-        kent_notes_add(&h->cautions,
-                       "'%s' runs through the ground that %s leans on, %s from the "
-                       "fitting (%.0f %% of that ground): in its trench nothing may be "
-                       "leant on, so move one, or restrain longer",
-                       other, block ? "the block" : "the restrained pipe", clear.s,
-                       percent);
+        kent_notes_warn(
+            &h->cautions,
+            "'%s' runs through the ground that %s leans on, %s from the "
+            "fitting (%.0f %% of that ground): in its trench nothing may be "
+            "leant on, so move one, or restrain longer",
+            other, block ? "the block" : "the restrained pipe", clear.s, percent);
         break;
     }
 }
@@ -414,8 +414,8 @@ static void say_all(const finder *f)
         if (told < TOLD) {
             say(f->m, &s->met[i], h);
         } else if (told == TOLD) {
-            kent_notes_add(&h->cautions,
-                           "more blocks or mains stand in that ground than are named");
+            kent_notes_warn(&h->cautions,
+                            "more blocks or mains stand in that ground than are named");
         }
     }
 }

@@ -277,10 +277,10 @@ static void caution_floats(const kent_holding_work *w, kent_holding *h)
 
     if (h->block.type != KENT_BLOCK_BASE) return;
     if (!(s->flotation[0] < w->m->rules.factor_flotation)) return;
-    kent_notes_add(&h->cautions,
-                   "empty, the main would lift off its base or take it along "
-                   "(flotation %.2f): what covers it must hold it down",
-                   s->flotation[0]);
+    kent_notes_warn(&h->cautions,
+                    "empty, the main would lift off its base or take it along "
+                    "(flotation %.2f): what covers it must hold it down",
+                    s->flotation[0]);
 }
 
 /* What could not be judged although it is asked, and which key would tell. */
@@ -292,7 +292,7 @@ static void caution_unknown(const kent_holding_work *w, kent_holding *h)
 
     if (!w->soil) return; /* said elsewhere */
     if (!s->bearing_known && h->block.type != KENT_BLOCK_BEARING) {
-        kent_notes_add(
+        kent_notes_warn(
             &h->cautions,
             "soil '%s' has no vertical_bearing: whether it carries the block "
             "is not judged",

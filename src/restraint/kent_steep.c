@@ -158,7 +158,7 @@ static void caution_steep(const kent_model *m, kent_steep *s)
                       isnan(s->friction) ? ", no friction counted" : "",
                       p->above_ground ? "" : ", and put water-stops across the trench");
     }
-    kent_notes_add(&s->cautions, "%s", kent_text_of(&t));
+    kent_notes_warn(&s->cautions, "%s", kent_text_of(&t));
     s->cautions.failed = s->cautions.failed || t.failed;
     kent_text_clear(&t);
 }

@@ -331,13 +331,13 @@ static bool tell_across(const kent_system_work *w, const kent_system_leg *legs,
             const double off = fabs(f->angle - 0.5 * PI);
             if (f->type != KENT_BEND || off > NEAR_RIGHT) continue;
             across = true;
-            kent_notes_add(&w->r->fittings[legs[i].fitting].cautions,
-                           "the restrained length runs on past %s, which turns %s: "
-                           "what lies beyond is pulled across, so that %s must be held "
-                           "by what holds it alone; lay them further apart if that can "
-                           "be",
-                           f->id, kent_said_of(KENT_ANGLE, w->m->units, f->angle).s,
-                           f->id);
+            kent_notes_warn(
+                &w->r->fittings[legs[i].fitting].cautions,
+                "the restrained length runs on past %s, which turns %s: "
+                "what lies beyond is pulled across, so that %s must be held "
+                "by what holds it alone; lay them further apart if that can "
+                "be",
+                f->id, kent_said_of(KENT_ANGLE, w->m->units, f->angle).s, f->id);
         }
     }
     return across;
@@ -389,14 +389,14 @@ static bool tell_system(const kent_system_work *w, const kent_system_of *system,
                    kent_said_of(KENT_LENGTH, w->m->units, system->length).s, joints,
                    kent_text_of(&where));
     if (!system->fits) {
-        kent_notes_add(notes, "not every leg of that system fits: it holds only once "
-                              "what breaks it is tied across or held by itself");
+        kent_notes_warn(notes, "not every leg of that system fits: it holds only once "
+                               "what breaks it is tied across or held by itself");
     }
     if (!is_turn(v) && !is_ended(v)) {
-        kent_notes_add(notes,
-                       "the pushes of that system are not added up: each leg of "
-                       "it runs as far as its own fitting asks, and whether that "
-                       "holds them together is not judged");
+        kent_notes_warn(notes,
+                        "the pushes of that system are not added up: each leg of "
+                        "it runs as far as its own fitting asks, and whether that "
+                        "holds them together is not judged");
     }
     const bool lost = names.failed || where.failed || notes->failed;
     kent_text_clear(&names);
@@ -447,10 +447,10 @@ static bool tell_alone(const kent_system_work *w, const kent_system_leg *leg)
     kent_holding *h = &w->r->fittings[leg->fitting];
     if (w->r->fittings[leg->walk.fitting].needs_nothing) return true;
     own_leg(w, leg)->fits = false;
-    kent_notes_add(&h->cautions,
-                   "the restrained length reaches %s, whose own is not known: nothing "
-                   "tells that the two hold each other",
-                   w->m->fittings[leg->walk.fitting].id);
+    kent_notes_warn(&h->cautions,
+                    "the restrained length reaches %s, whose own is not known: nothing "
+                    "tells that the two hold each other",
+                    w->m->fittings[leg->walk.fitting].id);
     if (h->held) lose(w->r, h);
     return !h->cautions.failed;
 }

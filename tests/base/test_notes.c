@@ -20,6 +20,22 @@ static void a_sentence_is_kept_once(void **state)
     assert_int_equal(n.count, 0);
 }
 
+static void what_is_unsafe_is_marked_and_stays_so(void **state)
+{
+    (void)state;
+    kent_notes n = {0};
+    kent_notes_add(&n, "listed");
+    kent_notes_warn(&n, "gives way at %d", 3);
+    kent_notes_add(&n, "said lightly");
+    kent_notes_warn(&n, "said lightly");
+    kent_notes_add(&n, "gives way at 3");
+    assert_int_equal(n.count, 3);
+    assert_false(n.grave[0]);
+    assert_true(n.grave[1]);
+    assert_true(n.grave[2]);
+    kent_notes_clear(&n);
+}
+
 static void thousands_of_sentences_keep_their_order(void **state)
 {
     (void)state;
@@ -61,6 +77,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_sentence_is_kept_once),
+        cmocka_unit_test(what_is_unsafe_is_marked_and_stays_so),
         cmocka_unit_test(thousands_of_sentences_keep_their_order),
         cmocka_unit_test(a_lost_note_is_remembered),
     };

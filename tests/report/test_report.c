@@ -367,7 +367,7 @@ static void what_a_fitting_serves_stands_in_json_and_csv(void **state)
                  0.118, 1e-15);
     assert_int_equal(json_array_size(json_object_get(h, "members")), 0);
     assert_true(json_is_null(json_object_get(h, "curve")));
-    assert_contains(kent_text_of(&csv), ",hydrant,blank,,,\n");
+    assert_contains(kent_text_of(&csv), ",hydrant,blank,,,");
     json_decref(all);
     kent_text_clear(&text);
     kent_text_clear(&csv);
