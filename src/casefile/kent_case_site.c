@@ -132,6 +132,19 @@ void kent_fill_solver(kent_filling *f)
     s->history_rows = (int)rows;
 }
 
+/* A rule that the case states, as it is shown. */
+static void own_rule_text(const kent_filling *f, const kent_key *key,
+                          const kent_field *field, char *out, size_t size)
+{
+    if (key->value == KENT_VALUE_WORD) {
+        (void)snprintf(out, size, "%s", field->twig->text);
+    } else if (key->value == KENT_VALUE_SWITCH) {
+        (void)snprintf(out, size, "%s", field->twig->number > 0.0 ? "true" : "false");
+    } else {
+        kent_fill_show(f, field->number, key->kind, out, size);
+    }
+}
+
 void kent_fill_rules(kent_filling *f)
 {
     static const char *const USUAL[] = {
@@ -157,11 +170,12 @@ void kent_fill_rules(kent_filling *f)
     kent_record_rules(&r, rules);
     if (kent_record_has(&r, "safety_factor")) rules->soils[0] = '\0';
     for (size_t i = 0; i < r.count; i++) {
-        const char *key = r.keys[i].key;
-        if (!r.fields[i].twig || strcmp(key, "set") == 0) continue;
+        if (!r.fields[i].twig || strcmp(r.keys[i].key, "set") == 0) continue;
+        char value[64];
+        own_rule_text(f, &r.keys[i], &r.fields[i], value, sizeof value);
         kent_notes_add(&f->model->cautions,
-                       "design rule %s is the case's own, not that of \"%s\"", key,
-                       rules->id);
+                       "design rule %s = %s is the case's own, not that of \"%s\"",
+                       r.keys[i].key, value, rules->id);
     }
     kent_record_rules_check(&f->reader, &r, rules);
 }

@@ -396,11 +396,15 @@ static void a_case_may_override_single_design_rules(void **state)
     char *text =
         replaced(SOUND_CASE, "ground =",
                  "design_rules = { set = \"common-practice\"; least_thickness = "
-                 "\"0.6 m\"; };\nground =");
+                 "\"0.6 m\"; spread = \"plain-concrete\"; soil_above = true; "
+                 "factor_sliding = 2.0; };\nground =");
     kent_model *m = read_sound(c, text);
     assert_close(m->rules.least_thickness, 0.6, 1e-12);
     assert_close(m->rules.least_height, 0.3, 1e-12);
-    assert_int_equal(cautions_with(m, "design rule least_thickness"), 1);
+    assert_int_equal(cautions_with(m, "design rule least_thickness = 0.6 m is"), 1);
+    assert_int_equal(cautions_with(m, "design rule spread = plain-concrete is"), 1);
+    assert_int_equal(cautions_with(m, "design rule soil_above = true is"), 1);
+    assert_int_equal(cautions_with(m, "design rule factor_sliding = 2 is"), 1);
     kent_model_free(m);
     free(text);
     kent_catalogue_free(c);
