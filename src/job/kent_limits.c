@@ -158,10 +158,10 @@ static void judge_built(kent_results *r)
     }
     if (count > 0) {
         r->limit_exceeded = true;
-        kent_notes_add(&r->cautions,
-                       "what was built at %s reaches less than is asked, or something "
-                       "of it cannot be told: see kentledge as-built",
-                       kent_text_of(&short_of));
+        kent_notes_warn(&r->cautions,
+                        "what was built at %s reaches less than is asked, or something "
+                        "of it cannot be told: see kentledge as-built",
+                        kent_text_of(&short_of));
     }
     r->cautions.failed = r->cautions.failed || short_of.failed;
     kent_text_clear(&short_of);

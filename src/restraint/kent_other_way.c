@@ -251,10 +251,11 @@ static void say_way(const kent_holding_work *w, kent_holding *h,
     add_way(w, way, &t);
     switch (way->taken) {
     case KENT_TAKEN_BY_FRICTION:
-        kent_text_add(&t,
-                      ": the block's weight takes it on its base (%s of the %s asked), "
-                      "once straps or rods tie the fitting to it",
-                      force(w, way->friction).s, force(w, way->load).s);
+        kent_text_add(
+            &t,
+            ": the block's weight takes it on its base, %s of friction against "
+            "%s factored, once straps or rods tie the fitting to it",
+            force(w, way->friction).s, force(w, way->load).s);
         break;
     case KENT_TAKEN_BY_NOTHING: /* slight: else it is refused */
         kent_text_add(&t, ", and the face does not bear that way: so little is left to "
