@@ -92,6 +92,12 @@ static double azimuth(const kent_row *r)
     return kent_thrust_azimuth(thrust(r));
 }
 
+/* rad above the level; downward it is negative. */
+static double inclination(const kent_row *r)
+{
+    return r->at ? atan2(thrust(r).z, across(r)) : NAN;
+}
+
 static double highest_seal(const kent_row *r)
 {
     double most = NAN;
@@ -638,6 +644,7 @@ static const kent_summary_column COLUMNS[] = {
     {"thrust up", thrust_z, NULL, KENT_FORCE, 0, OF_THRUST},
     {"horizontal", across, NULL, KENT_FORCE, 0, OF_THRUST},
     {"azimuth", azimuth, NULL, KENT_ANGLE, 0, OF_THRUST},
+    {"inclination", inclination, NULL, KENT_ANGLE, 0, OF_THRUST},
     {"largest seal diameter", highest_seal, NULL, KENT_DIAMETER, 0, OF_THRUST},
     {"seal diameters", NULL, seals, KENT_DIAMETER, UNITED, OF_THRUST},
     {"steady pressure", steady, NULL, KENT_PRESSURE, NARROW, OF_LOADS},

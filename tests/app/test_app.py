@@ -5,6 +5,7 @@ Exit statuses, what goes to which stream, and that a folder of results is whole 
 import csv
 import io
 import json
+import math
 import os
 import pathlib
 import re
@@ -308,6 +309,11 @@ class App(unittest.TestCase):
         table = " ".join(self.call("run", "main.cfg", "--no-files").stdout.split())
         self.assertIn("The case names as prevailing: EN 805:2000; AWWA M41, 3rd edition. "
                       "Nothing here says that any of them is met.", table)
+        for _, row in self.listed():
+            up, level = float(row["thrust up [kN]"]), float(row["horizontal [kN]"])
+            self.assertAlmostEqual(float(row["inclination [deg]"]),
+                                   math.degrees(math.atan2(up, level)), places=3)
+            self.assertNotEqual(up, 0.0)
         self.assertEqual([row["sheet"] for _, row in self.listed()], ["W-8/2", "W-7"])
         (self.dir / "main.cfg").write_text(CASE)
         self.assertNotIn("prevailing", self.call("run", "main.cfg", "--no-files").stdout)
