@@ -166,8 +166,9 @@ static void assume_material(kent_filling *f, const kent_pipe *p)
     for (size_t i = 0; row && i < sizeof values / sizeof values[0]; i++) {
         char what[96];
         char why[260];
-        if (isnan(values[i].own) || fabs(values[i].used - values[i].own) > 0.0)
+        if (isnan(values[i].own) || fabs(values[i].used - values[i].own) > 0.0) {
             continue;
+        }
         (void)snprintf(what, sizeof what, "%s of %s", values[i].what, row->id);
         (void)snprintf(why, sizeof why, "catalogue (%s): %s", row->from.status,
                        row->from.source);

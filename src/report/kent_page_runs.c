@@ -49,9 +49,10 @@ static void say_what_it_means(kent_page *page, bool massless, bool slips)
                 "its second point and back, before any factor, in scenarios that "
                 "decide; weight is the part of water and pipe along it, positive "
                 "towards the second point, and comes on top.");
-    if (massless)
+    if (massless) {
         kent_text_add(&words, " *: of the water alone, the pipe's mass is "
                               "not known.");
+    }
     if (slips) {
         kent_text_add(&words, " Where joints slip each pipe needs an anchor of its "
                               "own: nothing passes from one to the next.");

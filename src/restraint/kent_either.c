@@ -125,6 +125,7 @@ void kent_holding_either(const kent_holding_work *w, kent_holding *h)
     h->either.looked_at = true;
     if (h->either.joints) return;
     h->either.no_length = lack_says(w->lack);
-    if (!h->either.no_length && h->leg_count == 0)
+    if (!h->either.no_length && h->leg_count == 0) {
         h->either.no_length = "no pipe there";
+    }
 }

@@ -33,7 +33,7 @@ double kent_pull_through(const kent_model *m, const kent_pipe *p,
                          const kent_string_case *c);
 
 void kent_pull_end_derive(const kent_model *m, const kent_string_end *e,
-                          double string_length, kent_pull_end *p);
+                          double string_length, kent_pull_end *at);
 
 /* Whether a restrained fitting's pipes and joints are rated for what comes. */
 void kent_pull_ratings(const kent_model *m, const kent_fitting *f,

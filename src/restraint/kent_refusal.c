@@ -296,6 +296,57 @@ static void refuse_unstable(const kent_holding_work *w, const kent_holding *h,
                   words);
 }
 
+static void refuse_above_ground(const kent_holding_work *w, const kent_holding *h,
+                                kent_text *t)
+{
+    const kent_system units = w->m->units;
+
+    kent_text_add(t,
+                  "no block: this stands above ground, where no soil bears: hold "
+                  "it by a structure made for %s factored, or carry the push by "
+                  "flanges, welds or restrained joints into pipe that is held",
+                  kent_said_of(KENT_FORCE, units, h->design_thrust).s);
+}
+
+static void refuse_shallow(const kent_holding_work *w, kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const kent_rules *rules = &w->m->rules;
+
+    kent_text_add(
+        t,
+        "no block: a cover of %s is less than the least, %s; lay the "
+        "main that deep, or ",
+        kent_said_of(KENT_LENGTH, units, w->site.cover).s,
+        kent_said_of(KENT_LENGTH, units, kent_rules_cover(rules, w->site.diameter)).s);
+}
+
+static void refuse_vertical(const kent_holding_work *w, kent_text *t)
+{
+    kent_text_add(t,
+                  "no block: it would stand on soil '%s', whose bearing under a "
+                  "base is not stated, and one that goes with depth is for faces; "
+                  "give vertical_bearing",
+                  w->soil->id);
+    if (kent_soil_source(w->soil) == KENT_CATALOGUE) {
+        kent_text_add(t, " to an element of soils, from = \"%s\"", w->soil->id);
+    }
+    kent_text_add(t, ", or ");
+}
+
+static void refuse_slope(const kent_holding_work *w, kent_text *t)
+{
+    const kent_system units = w->m->units;
+    const kent_rules *rules = &w->m->rules;
+
+    kent_text_add(t,
+                  "no block: the ground before its face falls by %s along the "
+                  "thrust, and these rules allow %s; level it, tie the fitting back "
+                  "to ground uphill, or ",
+                  kent_said_of(KENT_ANGLE, units, w->site.falls).s,
+                  kent_said_of(KENT_ANGLE, units, rules->steepest_ground).s);
+}
+
 static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          kent_text *t)
 {
@@ -310,11 +361,7 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          "where this stands");
         return;
     case KENT_FAULT_ABOVE_GROUND:
-        kent_text_add(t,
-                      "no block: this stands above ground, where no soil bears: hold "
-                      "it by a structure made for %s factored, or carry the push by "
-                      "flanges, welds or restrained joints into pipe that is held",
-                      kent_said_of(KENT_FORCE, units, h->design_thrust).s);
+        refuse_above_ground(w, h, t);
         return;
     case KENT_FAULT_CASING:
         kent_text_add(t,
@@ -326,27 +373,13 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                          "cover where this stands");
         return;
     case KENT_FAULT_SHALLOW:
-        kent_text_add(
-            t,
-            "no block: a cover of %s is less than the least, %s; lay the "
-            "main that deep, or ",
-            kent_said_of(KENT_LENGTH, units, w->site.cover).s,
-            kent_said_of(KENT_LENGTH, units, kent_rules_cover(rules, w->site.diameter))
-                .s);
+        refuse_shallow(w, t);
         break;
     case KENT_FAULT_BEARING:
         refuse_bearing(w, t);
         break;
     case KENT_FAULT_VERTICAL:
-        kent_text_add(t,
-                      "no block: it would stand on soil '%s', whose bearing under a "
-                      "base is not stated, and one that goes with depth is for faces; "
-                      "give vertical_bearing",
-                      w->soil->id);
-        if (kent_soil_source(w->soil) == KENT_CATALOGUE) {
-            kent_text_add(t, " to an element of soils, from = \"%s\"", w->soil->id);
-        }
-        kent_text_add(t, ", or ");
+        refuse_vertical(w, t);
         break;
     case KENT_FAULT_OBSTACLE:
         refuse_obstacle(w, t);
@@ -361,13 +394,7 @@ static void refuse_block(const kent_holding_work *w, const kent_holding *h,
                       kent_said_of(KENT_VOLUME, units, rules->largest_volume).s);
         break;
     case KENT_FAULT_SLOPE:
-        kent_text_add(
-            t,
-            "no block: the ground before its face falls by %s along the "
-            "thrust, and these rules allow %s; level it, tie the fitting back "
-            "to ground uphill, or ",
-            kent_said_of(KENT_ANGLE, units, w->site.falls).s,
-            kent_said_of(KENT_ANGLE, units, rules->steepest_ground).s);
+        refuse_slope(w, t);
         break;
     case KENT_FAULT_FILL:
         refuse_fill(w, t);

@@ -40,10 +40,10 @@ typedef struct kent_load_case {
     bool given;          /* the one case of a ports-only fitting */
     bool extended;       /* a branch without a pipe, once one is joined to it */
     bool later;          /* under the pressure expected later */
-    bool closed;         /* of a shut valve or leg, pressed from one side only: */
-    size_t pressed;      /* which port */
-    bool emptied; /* of a shut leg, with nothing behind it, the others pressed: */
-    size_t dry;   /* which port */
+    bool closed;         /* of a shut valve or leg, pressed from one side only */
+    bool emptied;        /* of a shut leg, with nothing behind it, the others pressed */
+    size_t pressed;      /* where closed: which port */
+    size_t dry;          /* where emptied: which port */
     const kent_site_test *test; /* of the result: how the test pressure was found; NULL:
                                    as stated */
     double safety_factor;

@@ -338,9 +338,8 @@ static void sheet_port_pressure(const kent_sheet *s, size_t i)
         kent_sheet_put(s, symbol, 0.0, KENT_PRESSURE, KENT_ASSUMED,
                        s->load->closed ? "nothing behind the closed valve"
                                        : "this leg is shut and empty");
-    } else if (s->load->closed && isnan(s->ports[i].level)) {
-        sheet_pressure(s, symbol.s, pressure);
-    } else if (s->fitting->type == KENT_VALVE) {
+    } else if (s->fitting->type == KENT_VALVE ||
+               (s->load->closed && isnan(s->ports[i].level))) {
         sheet_pressure(s, symbol.s, pressure);
     } else if (!isnan(s->ports[i].level)) {
         sheet_own_level(s, i);

@@ -146,8 +146,9 @@ static int recorder_watch_fitting(kent_recorder *r, const kent_fitting *f,
     for (size_t i = 0; i < f->port_count; i++) {
         const kent_port *port = &ports[i];
         if (port->kind != KENT_PORT_SPAN) continue;
-        if (kent_recorder_watch(r, first, port->span, port->chainage, &watch[i]))
+        if (kent_recorder_watch(r, first, port->span, port->chainage, &watch[i])) {
             return -1;
+        }
     }
     for (size_t i = 0; i < f->port_count; i++) {
         if (ports[i].kind != KENT_PORT_SPAN) watch[i] = watch[widest];

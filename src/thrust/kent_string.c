@@ -191,8 +191,9 @@ static kent_string_end end_of(const string_work *w, const string_arm *arm, size_
 
     for (size_t i = first; i < end; i++) {
         const string_arm *other = &w->arms[i];
-        if (other == arm || (other->piece >= 0 && !point_parts(w, arm->point)))
+        if (other == arm || (other->piece >= 0 && !point_parts(w, arm->point))) {
             continue;
+        }
         if (slips && m->spans[slips->span].bore >= m->spans[other->span].bore) continue;
         slips = other;
     }

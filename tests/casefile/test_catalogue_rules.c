@@ -8,8 +8,8 @@ static const kent_rules *sure_rules(const kent_catalogue *c, const char *id)
     for (size_t i = 0; i < c->rule_count; i++) {
         if (strcmp(c->rules[i].id, id) == 0) return &c->rules[i];
     }
-    assert_true(false);
-    return NULL;
+    fail_msg("no set '%s'", id);
+    return c->rules; /* never reached: the line above leaves the test */
 }
 
 /* Common practice, no source, but for the share of sleeved pipes (iron-pipe handbooks,
@@ -113,8 +113,6 @@ static void sets_differ_in_what_they_are_for(void **state)
     for (size_t i = 0; i < sizeof US / sizeof US[0]; i++) {
         const kent_rules *r = sure_rules(c, US[i]);
         want = common;
-        memcpy(want.id, r->id, sizeof want.id);
-        memcpy(want.source, r->source, sizeof want.source);
         if (i == 0) want.spread = KENT_SPREAD_CONCRETE;
         if (i == 1) want.length_form = KENT_FORM_ETL;
         if (i == 2) {

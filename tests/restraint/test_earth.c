@@ -72,8 +72,8 @@ static void the_plane_of_failure_is_the_one_that_gives_least(void **state)
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
         const double phi = rows[i][0] * DEGREE, delta = rows[i][1] * DEGREE;
         double least = INFINITY, at = 0.0;
-        for (double plane = 1e-3; plane < 60.0; plane += 1e-3) {
-            const double a = plane * DEGREE;
+        for (int k = 1; k < 60000; k++) {
+            const double a = 1e-3 * k * DEGREE;
             const double down = cos(delta) / tan(a + phi) - sin(delta);
             if (!(down > 0.0)) break;
             const double push = 1.0 / tan(a) / down; /* of gamma H2/2 */
