@@ -4,12 +4,11 @@ Every quantity of a case in SI is written in US units, with all the digits of a 
 are run, and every number of their results must agree to 1e-9. Factors: the international foot and
 the avoirdupois pound at 9.80665 m/s2 (NIST Special Publication 811, appendix B; exact).
 """
-import json
-import math
 import pathlib
 import re
-import subprocess
 import sys
+
+from same_case import compare, leaves, run
 
 TOLERANCE = 1e-9  # relative, or of a thousandth of the largest number of the same name
 LEAST = 1e-6  # of its SI unit: a smaller number is nil
@@ -62,62 +61,6 @@ def in_us_units(text):
     return out, converted
 
 
-def run(program, folder, name, text):
-    case = folder / name
-    case.write_text(text, encoding="utf-8")
-    done = subprocess.run([program, "run", case.name, "--format", "json", "--no-files", "--quiet"],
-                          cwd=folder, stdout=subprocess.PIPE, stderr=subprocess.PIPE,
-                          encoding="utf-8", timeout=600)
-    if done.returncode != 0:
-        sys.exit(f"{case}: status {done.returncode}\n{done.stderr}")
-    return json.loads(done.stdout)
-
-
-def numbers(tree, path, out):
-    """Every number by its path, and everything else that decides: types, ids, true and false."""
-    if isinstance(tree, dict):
-        for key, value in tree.items():
-            if key in ("case_checksum", "cautions", "assumed", "completeness"):
-                continue  # words, which may hold a rounded figure of either
-            if key == "time_s" or key.endswith("_at_s") or key.startswith("history_"):
-                continue  # where a peak is flat, rounding says which instants show it
-            numbers(value, f"{path}.{key}", out)
-    elif isinstance(tree, list):
-        out[f"{path}.length"] = len(tree)
-        for i, value in enumerate(tree):
-            numbers(value, f"{path}.{i}", out)
-    else:
-        out[path] = tree
-
-
-def compare(si, us, complaints):
-    a, b = {}, {}
-    numbers(si, "", a)
-    numbers(us, "", b)
-    scale = {}
-    for path, value in a.items():
-        if isinstance(value, float):
-            kind = re.sub(r"\.\d+", "", path)
-            scale[kind] = max(scale.get(kind, 0.0), abs(value))
-    if a.keys() != b.keys():
-        complaints.append(f"keys differ: {sorted(a.keys() ^ b.keys())[:5]}")
-    worst, where = 0.0, ""
-    for path in a.keys() & b.keys():
-        x, y = a[path], b[path]
-        if isinstance(x, (int, float)) and isinstance(y, (int, float)) and not isinstance(x, bool):
-            kind = re.sub(r"\.\d+", "", path)
-            least = LEAST_OF.get(path.rpartition(".")[2], LEAST)
-            size = max(abs(x), abs(y), scale.get(kind, 0.0) * 1e-3, least)
-            gap = abs(x - y) / size
-            if not math.isfinite(gap) or gap > TOLERANCE:
-                complaints.append(f"{path}: {x!r} in SI, {y!r} in US units")
-            if gap > worst:
-                worst, where = gap, path
-        elif x != y:
-            complaints.append(f"{path}: {x!r} in SI, {y!r} in US units")
-    return worst, where, len(a)
-
-
 def main():
     program, work = pathlib.Path(sys.argv[1]).resolve(), pathlib.Path(sys.argv[2])
     work.mkdir(parents=True, exist_ok=True)
@@ -128,11 +71,11 @@ def main():
         other, converted = in_us_units(text)
         if converted < 10 or other == text:
             sys.exit(f"{name}: {converted} quantities, hardly a case")
-        si = run(program, work, f"{path.stem}-si.cfg", text)
-        us = run(program, work, f"{path.stem}-us.cfg", other)
-        complaints = []
-        worst, where, count = compare(si, us, complaints)
-        print(f"{path.stem}: {converted} quantities, {count} values, worst {worst:.2g} at {where}")
+        si = leaves(run(program, work, f"{path.stem}-si.cfg", text))
+        us = leaves(run(program, work, f"{path.stem}-us.cfg", other))
+        worst, where, complaints = compare(si, us, TOLERANCE,
+                                           lambda name: LEAST_OF.get(name, LEAST))
+        print(f"{path.stem}: {converted} quantities, {len(si)} values, worst {worst:.2g} at {where}")
         for complaint in complaints[:20]:
             print(f"  {complaint}")
         failed = failed or bool(complaints)
